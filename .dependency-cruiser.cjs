@@ -1,0 +1,82 @@
+/** The ranks of the rooms: a file imports only from a lower rank, never sideways, never in a circle. */
+const rooms = [
+  ['quantities', '^lib/(quantities/|errors\\.ts$)', 0],
+  ['numerics', '^lib/numerics/', 1],
+  ['schemas', '^lib/schemas/', 1],
+  ['formats', '^lib/formats/', 1],
+  ['sensitivity', '^lib/sensitivity/', 2],
+  ['population', '^lib/population/', 2],
+  ['inference', '^lib/inference/', 3],
+  ['config', '^lib/config\\.ts$', 4],
+  ['models', '^models/', 4],
+  ['access', '^lib/access/', 4],
+  ['queue', '^lib/queue/', 5],
+  ['mail', '^lib/mail/', 5],
+  ['services', '^lib/services/', 6],
+  ['workers', '^workers/', 6],
+  ['components', '^components/', 7],
+  ['app', '^(app/|proxy\\.ts$)', 8],
+];
+
+/** Rooms of one rank that may be read by their equals: who holds what is the one exception made for models. */
+const allowedSideways = { access: ['models', 'config'], models: ['config'], population: ['sensitivity'] };
+
+const rankRules = rooms.map(([name, path, rank]) => ({
+  name: `rank-of-${name}`,
+  severity: 'error',
+  comment: 'architecture: a room imports only from lower ranks',
+  from: { path },
+  to: {
+    path: rooms
+      .filter(([other, , otherRank]) => other !== name && otherRank >= rank && !(allowedSideways[name] ?? []).includes(other))
+      .map(([, otherPath]) => otherPath),
+  },
+}));
+
+const pure = '^lib/(quantities|numerics|sensitivity|population|inference)/';
+
+module.exports = {
+  forbidden: [
+    { name: 'no-circles', severity: 'error', from: {}, to: { circular: true } },
+    ...rankRules,
+    {
+      name: 'pure-rooms-import-no-platform',
+      severity: 'error',
+      from: { path: pure },
+      to: { dependencyTypes: ['core'] },
+    },
+    {
+      name: 'pure-rooms-import-no-package',
+      severity: 'error',
+      comment: 'numerics/vendor.ts is the one door to numerical packages',
+      from: { path: pure, pathNot: '^lib/numerics/vendor\\.ts$' },
+      to: { dependencyTypes: ['npm', 'npm-dev'] },
+    },
+    {
+      name: 'components-stay-in-the-browser',
+      severity: 'error',
+      from: { path: '^components/' },
+      to: { path: '^(lib/(config|access|queue|mail|services|formats)|models|workers)' },
+    },
+    {
+      name: 'pages-reach-rows-through-services',
+      severity: 'error',
+      from: { path: '^app/' },
+      to: { path: '^(models|workers|lib/(queue|mail|formats|local))' },
+    },
+    {
+      name: 'launcher-before-install',
+      severity: 'error',
+      from: { path: '^lib/local/.*\\.mjs$' },
+      to: { dependencyTypes: ['npm', 'npm-dev'] },
+    },
+  ],
+  options: {
+    doNotFollow: { path: 'node_modules' },
+    tsConfig: { fileName: 'tsconfig.json' },
+    tsPreCompilationDeps: true,
+    includeOnly: '^(app|components|lib|models|workers|proxy\\.ts)',
+    moduleSystems: ['es6', 'cjs'],
+    skipAnalysisNotInRules: true,
+  },
+};
