@@ -1,0 +1,1 @@
+export type { Likelihood, RatePosterior, RatePrior, RateQuantity, RateQuestion } from './contract';
