@@ -1,0 +1,51 @@
+import { z } from 'zod';
+
+const environment = z.object({
+  DATABASE_URL: z.string().min(1),
+  DATABASE_POOL: z.coerce.number().int().min(1).default(10),
+  NEXTAUTH_URL: z.string().default('http://127.0.0.1:3210'),
+  NEXTAUTH_SECRET: z.string().min(16).default('only-for-tests-0123456789abcdef'),
+  MAIL_URL: z.string().optional(),
+  MAILBOX_URL: z.string().optional(),
+  MAIL_FROM: z.string().default('rarebound@localhost'),
+  RAREBOUND_DATA_DIR: z.string().default('.data'),
+  RAREBOUND_WORKER_THREADS: z.coerce.number().int().min(1).optional(),
+  NODE_ENV: z.string().default('development'),
+});
+
+export interface Config {
+  databaseUrl: string;
+  databasePool: number;
+  webAddress: string;
+  authSecret: string;
+  mailUrl: string | undefined;
+  mailboxUrl: string | undefined;
+  mailFrom: string;
+  dataDirectory: string;
+  workerThreads: number | undefined;
+  isProduction: boolean;
+}
+
+let parsed: Config | undefined;
+
+/** The environment, parsed once at first use; nothing else reads process.env. */
+export function config(): Config {
+  if (parsed) return parsed;
+  const env = environment.parse(process.env);
+  if (env.NODE_ENV === 'production' && !process.env.NEXTAUTH_SECRET) {
+    throw new Error('NEXTAUTH_SECRET is not set: sessions cannot be signed');
+  }
+  parsed = {
+    databaseUrl: env.DATABASE_URL,
+    databasePool: env.DATABASE_POOL,
+    webAddress: env.NEXTAUTH_URL,
+    authSecret: env.NEXTAUTH_SECRET,
+    mailUrl: env.MAIL_URL,
+    mailboxUrl: env.MAILBOX_URL,
+    mailFrom: env.MAIL_FROM,
+    dataDirectory: env.RAREBOUND_DATA_DIR,
+    workerThreads: env.RAREBOUND_WORKER_THREADS,
+    isProduction: env.NODE_ENV === 'production',
+  };
+  return parsed;
+}

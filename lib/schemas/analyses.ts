@@ -1,0 +1,85 @@
+import { z } from 'zod';
+import { idSchema, levelSchema, lineSchema, moment, positiveSchema } from './common';
+import { populationSchema } from './populations';
+import { runSummarySchema } from './runs';
+
+export const ratePriorSchema = z.discriminatedUnion('law', [
+  z.strictObject({ law: z.literal('uniform'), max: positiveSchema.max(1000) }),
+  z.strictObject({
+    law: z.literal('log-uniform'),
+    min: positiveSchema,
+    max: positiveSchema.max(1000),
+  }),
+  z.strictObject({ law: z.literal('jeffreys'), max: positiveSchema.max(1000).optional() }),
+  z.strictObject({ law: z.literal('gamma'), shape: positiveSchema, rate: z.number().min(0) }),
+  z.strictObject({ law: z.literal('beta'), a: positiveSchema, b: positiveSchema }),
+]);
+export type RatePriorInput = z.infer<typeof ratePriorSchema>;
+export const likelihoodSchema = z.enum(['mean-number', 'host-fraction']);
+
+/** The editable recipe of an analysis; a run keeps its own copy. */
+export const analysisRecipeSchema = z
+  .strictObject({
+    surveyIds: z.array(idSchema).min(1, 'at least one survey').max(200),
+    populationId: idSchema,
+    likelihood: likelihoodSchema,
+    prior: ratePriorSchema,
+    credibleLevel: levelSchema.default(0.95),
+    /** 'counted': confirmed companions inside the ranges; 'none': the run sets all detections aside. */
+    detections: z.enum(['counted', 'none']).default('counted'),
+    /** A star in several surveys: its combined map. */
+    combination: z
+      .enum(['default', 'same-position', 'deepest', 'independent', 'refuse'])
+      .default('default'),
+    /** A box that reaches past the maps: completeness is zero there only if a person says so. */
+    zeroOutsideMaps: z.boolean().default(false),
+  })
+  .superRefine((recipe, context) => {
+    const { prior, likelihood } = recipe;
+    const refuse = (path: string, message: string) =>
+      context.addIssue({ code: 'custom', path: ['prior', path], message });
+    if (prior.law === 'log-uniform' && prior.min >= prior.max) refuse('min', 'min below max');
+    if (likelihood === 'host-fraction') {
+      if ('max' in prior && prior.max !== undefined && prior.max > 1)
+        refuse('max', 'at most 1 for a fraction of stars');
+      if (prior.law === 'gamma')
+        refuse('law', 'a prior on a fraction: uniform, log-uniform, jeffreys or beta');
+    } else if (prior.law === 'beta')
+      refuse('law', 'a prior on a mean number: uniform, log-uniform, jeffreys or gamma');
+  });
+export type AnalysisRecipe = z.infer<typeof analysisRecipeSchema>;
+
+export const createAnalysisSchema = z.strictObject({
+  name: lineSchema(120),
+  recipe: analysisRecipeSchema,
+});
+export const updateAnalysisSchema = z.strictObject({
+  name: lineSchema(120).optional(),
+  recipe: analysisRecipeSchema.optional(),
+});
+export const copyAnalysisSchema = z.strictObject({
+  name: lineSchema(120).optional(),
+  /** Changes made in the same step, such as setting the detections aside. */
+  detections: z.enum(['counted', 'none']).optional(),
+});
+
+export const analysisSchema = z.object({
+  id: idSchema,
+  key: z.string(),
+  number: z.number(),
+  name: z.string(),
+  recipe: analysisRecipeSchema,
+  population: populationSchema,
+  surveys: z.array(
+    z.object({ id: idSchema, slug: z.string(), name: z.string(), position: z.number() }),
+  ),
+  parent: z.string().nullable(),
+  createdBy: z.string().nullable(),
+  createdAt: moment,
+  updatedAt: moment,
+  /** Newest first. */
+  runs: z.array(runSummarySchema),
+  state: z.enum(['draft', 'changed', 'running', 'run', 'failed']),
+  can: z.object({ run: z.boolean(), change: z.boolean(), remove: z.boolean(), copy: z.boolean() }),
+});
+export type AnalysisView = z.infer<typeof analysisSchema>;

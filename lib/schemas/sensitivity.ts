@@ -1,0 +1,50 @@
+import { z } from 'zod';
+import { idSchema, positiveSchema } from './common';
+
+export const eccentricityLawSchema = z.discriminatedUnion('law', [
+  z.strictObject({ law: z.literal('circular') }),
+  z.strictObject({ law: z.literal('fixed'), eccentricity: z.number().min(0).lt(1) }),
+  z.strictObject({ law: z.literal('uniform'), max: z.number().gt(0).lt(1) }),
+  z.strictObject({ law: z.literal('beta'), alpha: positiveSchema, beta: positiveSchema }),
+  z.strictObject({ law: z.literal('rayleigh'), sigma: positiveSchema }),
+]);
+
+export const axisRangeSchema = z
+  .strictObject({
+    min: positiveSchema,
+    max: positiveSchema,
+    count: z.number().int().min(2).max(512),
+  })
+  .refine((axis) => axis.min < axis.max, 'min below max');
+
+/** How a survey's contrast curves become completeness maps. Part of each map's digest. */
+export const mapSettingsSchema = z.strictObject({
+  eccentricity: eccentricityLawSchema.default({ law: 'uniform', max: 0.95 }),
+  threshold: z.enum(['hard', 'smooth']).default('smooth'),
+  cooling: z
+    .discriminatedUnion('kind', [
+      z.strictObject({ kind: z.literal('built-in') }),
+      z.strictObject({ kind: z.literal('table'), coolingTableId: idSchema }),
+    ])
+    .default({ kind: 'built-in' }),
+  massOutsideTable: z.enum(['undetectable', 'edge']).default('undetectable'),
+  ageOutsideTable: z.enum(['refuse', 'edge']).default('refuse'),
+  massMjup: axisRangeSchema.default({ min: 0.5, max: 80, count: 56 }),
+  semiMajorAxisAu: axisRangeSchema.default({ min: 1, max: 1000, count: 64 }),
+});
+export type MapSettings = z.infer<typeof mapSettingsSchema>;
+
+export const mapViewSchema = z.object({
+  id: idSchema,
+  digest: z.string(),
+  origin: z.enum(['computed', 'uploaded']),
+  engineVersion: z.string(),
+  checksum: z.string(),
+  massMjup: z.array(z.number()),
+  semiMajorAxisAu: z.array(z.number()),
+  /** Rows of mass, columns of semi-major axis; what uint16 storage keeps, within 7.7e-6. */
+  completeness: z.array(z.array(z.number())),
+  report: z.record(z.string(), z.unknown()),
+  inputs: z.record(z.string(), z.unknown()),
+});
+export type MapView = z.infer<typeof mapViewSchema>;

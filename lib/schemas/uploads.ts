@@ -1,0 +1,86 @@
+import { z } from 'zod';
+import { idSchema, lineSchema, moment } from './common';
+import { faultSchema } from './problem';
+
+export const uploadKindSchema = z.enum([
+  'targets',
+  'contrast-curves',
+  'completeness-maps',
+  'companions',
+  'cooling-tables',
+]);
+export type UploadKindName = z.infer<typeof uploadKindSchema>;
+
+/** The query of POST …/uploads; the body is the file itself, its SHA-256 may come in a header. */
+export const uploadQuerySchema = z.strictObject({
+  kind: uploadKindSchema,
+  /** Needed for every kind but cooling tables. */
+  survey: z.string().optional(),
+  name: lineSchema(200),
+});
+
+/** What a person may decide between reading and storing; each change reads the file again. */
+export const uploadSettingsSchema = z.strictObject({
+  /** For curve files and wide maps without a target column. */
+  defaultTarget: lineSchema(100).optional(),
+  notMeasuredIsZero: z.boolean().optional(),
+  /** Heading in the file → our column, or '' to leave it out. */
+  columnMap: z.record(z.string(), z.string()).optional(),
+  /** Name of a cooling table. */
+  title: lineSchema(100).optional(),
+  /** Items of the file that are left out: a target's name. */
+  leaveOut: z.array(z.string()).optional(),
+});
+export type UploadSettings = z.infer<typeof uploadSettingsSchema>;
+
+export const noteSchema = z.object({
+  code: z.string(),
+  line: z.number().optional(),
+  column: z.string().optional(),
+  item: z.string().optional(),
+  message: z.string(),
+});
+
+/** What the dry run says: the same code that stores has read every line. */
+export const uploadReportSchema = z.object({
+  container: z.string(),
+  rows: z.number(),
+  columns: z.array(
+    z.object({
+      index: z.number(),
+      heading: z.string(),
+      readAs: z.string().nullable(),
+      unit: z.string().nullable(),
+    }),
+  ),
+  notes: z.array(noteSchema),
+  faults: z.array(faultSchema),
+  faultCount: z.number(),
+  /** One line an item: what would be stored, and whether it is new, known or replaced. */
+  items: z.array(
+    z.object({
+      name: z.string(),
+      outcome: z.enum(['new', 'known-star', 'replaces', 'unchanged', 'left-out']),
+      summary: z.string(),
+    }),
+  ),
+  /** Counts in words: "94 new targets, 2 of known stars". */
+  summary: z.string(),
+});
+export type UploadReport = z.infer<typeof uploadReportSchema>;
+
+export const uploadSchema = z.object({
+  id: idSchema,
+  kind: uploadKindSchema,
+  survey: z.string().nullable(),
+  fileName: z.string(),
+  byteLength: z.number(),
+  sha256: z.string(),
+  state: z.enum(['read', 'refused', 'stored']),
+  settings: uploadSettingsSchema,
+  report: uploadReportSchema,
+  uploadedBy: z.string().nullable(),
+  createdAt: moment,
+  storedAt: moment.nullable(),
+});
+export type UploadView = z.infer<typeof uploadSchema>;

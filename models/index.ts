@@ -1,0 +1,115 @@
+import { Sequelize, type Transaction } from 'sequelize';
+import { config } from '@/lib/config';
+import { AccessTokenRow, defineAccessToken } from './access-token';
+import { AnalysisRow, defineAnalysis } from './analysis';
+import { AuditEntryRow, defineAuditEntry } from './audit-entry';
+import { CollaborationRow, defineCollaboration } from './collaboration';
+import { CompanionRow, defineCompanion } from './companion';
+import { CompletenessMapRow, defineCompletenessMap } from './completeness-map';
+import { ContrastCurveRow, defineContrastCurve } from './contrast-curve';
+import { CoolingTableRow, defineCoolingTable } from './cooling-table';
+import { defineInvitation, InvitationRow } from './invitation';
+import { defineJob, JobRow } from './job';
+import { defineMember, MemberRow } from './member';
+import { definePerson, PersonRow } from './person';
+import { definePopulation, PopulationRow } from './population';
+import { defineRun, RunRow } from './run';
+import { defineSession, SessionRow } from './session';
+import { defineStar, StarRow } from './star';
+import { defineSurvey, SurveyRow } from './survey';
+import { defineTarget, TargetRow } from './target';
+import { defineUpload, UploadRow } from './upload';
+
+export {
+  AccessTokenRow,
+  AnalysisRow,
+  AuditEntryRow,
+  CollaborationRow,
+  CompanionRow,
+  CompletenessMapRow,
+  ContrastCurveRow,
+  CoolingTableRow,
+  InvitationRow,
+  JobRow,
+  MemberRow,
+  PersonRow,
+  PopulationRow,
+  RunRow,
+  SessionRow,
+  StarRow,
+  SurveyRow,
+  TargetRow,
+  UploadRow,
+};
+
+/** All associations stand here, so that no model imports another. Each names its alias and column. */
+function associate(): void {
+  MemberRow.belongsTo(PersonRow, { as: 'person', foreignKey: 'personId' });
+  MemberRow.belongsTo(CollaborationRow, { as: 'collaboration', foreignKey: 'collaborationId' });
+  SessionRow.belongsTo(PersonRow, { as: 'person', foreignKey: 'personId' });
+  InvitationRow.belongsTo(CollaborationRow, { as: 'collaboration', foreignKey: 'collaborationId' });
+  SurveyRow.belongsTo(PersonRow, { as: 'lead', foreignKey: 'leadId' });
+  SurveyRow.hasMany(TargetRow, { as: 'targets', foreignKey: 'surveyId' });
+  TargetRow.belongsTo(SurveyRow, { as: 'survey', foreignKey: 'surveyId' });
+  TargetRow.belongsTo(StarRow, { as: 'star', foreignKey: 'starId' });
+  StarRow.hasMany(TargetRow, { as: 'targets', foreignKey: 'starId' });
+  TargetRow.hasMany(ContrastCurveRow, { as: 'curves', foreignKey: 'targetId' });
+  TargetRow.hasMany(CompanionRow, { as: 'companions', foreignKey: 'targetId' });
+  CompanionRow.belongsTo(TargetRow, { as: 'target', foreignKey: 'targetId' });
+  TargetRow.belongsTo(CompletenessMapRow, { as: 'map', foreignKey: 'mapId' });
+  AnalysisRow.hasMany(RunRow, { as: 'runs', foreignKey: 'analysisId' });
+  AnalysisRow.belongsTo(AnalysisRow, { as: 'parent', foreignKey: 'parentId' });
+  RunRow.belongsTo(AnalysisRow, { as: 'analysis', foreignKey: 'analysisId' });
+  RunRow.belongsTo(JobRow, { as: 'job', foreignKey: 'jobId' });
+  AuditEntryRow.belongsTo(PersonRow, { as: 'person', foreignKey: 'personId' });
+}
+
+/** A connection with every model defined on it. Tests and the worker make their own. */
+export function connect(databaseUrl: string, poolSize = 10): Sequelize {
+  const sequelize = new Sequelize(databaseUrl, {
+    dialect: 'postgres',
+    logging: false,
+    pool: { max: poolSize, min: 0, idle: 10_000 },
+    dialectOptions: { idle_in_transaction_session_timeout: 60_000 },
+  });
+  defineCollaboration(sequelize);
+  definePerson(sequelize);
+  defineSession(sequelize);
+  defineMember(sequelize);
+  defineInvitation(sequelize);
+  defineAccessToken(sequelize);
+  defineSurvey(sequelize);
+  defineUpload(sequelize);
+  defineStar(sequelize);
+  defineTarget(sequelize);
+  defineContrastCurve(sequelize);
+  defineCoolingTable(sequelize);
+  defineCompletenessMap(sequelize);
+  defineCompanion(sequelize);
+  definePopulation(sequelize);
+  defineAnalysis(sequelize);
+  defineJob(sequelize);
+  defineRun(sequelize);
+  defineAuditEntry(sequelize);
+  associate();
+  return sequelize;
+}
+
+const holder = globalThis as typeof globalThis & { rareboundDatabase?: Sequelize };
+
+/** The process's one connection, opened at first use: importing a module never connects. */
+export function database(): Sequelize {
+  holder.rareboundDatabase ??= connect(config().databaseUrl, config().databasePool);
+  return holder.rareboundDatabase;
+}
+
+/** Closes the process's connection; the next use opens a new one. */
+export async function closeDatabase(): Promise<void> {
+  await holder.rareboundDatabase?.close();
+  holder.rareboundDatabase = undefined;
+}
+
+/** One transaction per use case. */
+export function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
+  return database().transaction(work);
+}
