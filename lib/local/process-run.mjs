@@ -1,0 +1,82 @@
+import { spawn } from 'node:child_process';
+import { readFileSync } from 'node:fs';
+import { root } from './environment.mjs';
+
+/**
+ * Runs a program to its end and keeps what it wrote.
+ *
+ * @param {string} command
+ * @param {string[]} args
+ * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, input?: string, uid?: number, gid?: number,
+ *   show?: boolean, signal?: AbortSignal }} [options] `show` passes the output on as it comes
+ * @returns {Promise<{ code: number, output: string, stdout: string }>} code is 127 when the program
+ *   is missing and 128 when a signal ended it
+ */
+export function run(command, args, options = {}) {
+  const { input, show, ...rest } = options;
+  return new Promise((resolve) => {
+    const child = spawn(command, args, { cwd: root, ...rest, stdio: ['pipe', 'pipe', 'pipe'] });
+    let output = '';
+    let stdout = '';
+    child.stdout.on('data', (chunk) => {
+      output += chunk;
+      stdout += chunk;
+      if (show) process.stdout.write(chunk);
+    });
+    child.stderr.on('data', (chunk) => {
+      output += chunk;
+      if (show) process.stderr.write(chunk);
+    });
+    child.stdin.on('error', () => {});
+    child.stdin.end(input ?? '');
+    child.on('error', (error) =>
+      resolve({ code: 127, output: `${output}${error.message}\n`, stdout }),
+    );
+    child.on('close', (code) => resolve({ code: code ?? 128, output, stdout }));
+  });
+}
+
+/**
+ * State and start time of a process, which together with its number tell it from a later process
+ * that was given the same number.
+ *
+ * @returns {{ name: string, state: string, startTicks: string } | null} null when there is none
+ */
+export function readProcess(/** @type {number} */ pid) {
+  try {
+    const text = readFileSync(`/proc/${pid}/stat`, 'utf8');
+    const end = text.lastIndexOf(')');
+    const fields = text.slice(end + 2).split(' ');
+    return {
+      name: text.slice(text.indexOf('(') + 1, end),
+      state: fields[0],
+      startTicks: fields[19],
+    };
+  } catch {
+    return null;
+  }
+}
+
+/** A process that has ended but was not yet collected by its parent does not count as alive. */
+export function isAlive(/** @type {number} */ pid, /** @type {string | undefined} */ startTicks) {
+  const found = readProcess(pid);
+  if (found === null || found.state === 'Z' || found.state === 'X') return false;
+  return startTicks === undefined || found.startTicks === startTicks;
+}
+
+export const wait = (/** @type {number} */ milliseconds) =>
+  new Promise((resolve) => setTimeout(resolve, milliseconds));
+
+/** @returns {Promise<boolean>} whether the condition became true in time */
+export async function waitUntil(
+  /** @type {() => boolean | Promise<boolean>} */ condition,
+  /** @type {number} */ milliseconds,
+  step = 50,
+) {
+  const end = Date.now() + milliseconds;
+  while (!(await condition())) {
+    if (Date.now() > end) return false;
+    await wait(step);
+  }
+  return true;
+}

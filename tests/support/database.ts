@@ -1,0 +1,103 @@
+import { randomBytes } from 'node:crypto';
+import { Client, type QueryResultRow } from 'pg';
+import { closeDatabase } from '@/models';
+
+const TEMPLATE = 'rarebound_template';
+const TEMPLATE_IN_USE = '55006';
+
+export interface TestDatabase {
+  name: string;
+  url: string;
+}
+
+function maintenanceUrl(): string {
+  const url = process.env.TEST_DATABASE_URL;
+  if (!url) throw new Error('TEST_DATABASE_URL is not set: tests/support/test-cluster.ts sets it');
+  return url;
+}
+
+async function withClient<T>(url: string, work: (client: Client) => Promise<T>): Promise<T> {
+  const client = new Client({ connectionString: url, application_name: 'test-support' });
+  await client.connect();
+  try {
+    return await work(client);
+  } finally {
+    await client.end();
+  }
+}
+
+/** A migrated, empty database of its own, copied from the template. */
+export async function createTestDatabase(): Promise<TestDatabase> {
+  const name = `test_${process.pid}_${randomBytes(4).toString('hex')}`;
+  const url = new URL(maintenanceUrl());
+  url.pathname = `/${name}`;
+  await withClient(maintenanceUrl(), async (client) => {
+    const end = Date.now() + 30_000;
+    for (;;) {
+      try {
+        await client.query(`create database ${name} template ${TEMPLATE}`);
+        return;
+      } catch (error) {
+        // The template can be copied by one test file at a time.
+        const isBusy = (error as { code?: string }).code === TEMPLATE_IN_USE;
+        if (!isBusy || Date.now() > end) throw error;
+        await new Promise((resolve) => setTimeout(resolve, 50 + Math.random() * 100));
+      }
+    }
+  });
+  return { name, url: url.href };
+}
+
+/**
+ * Connections that others hold to a database, as "application: last statement".
+ *
+ * @param patienceMs how long a connection that is just being closed may take
+ */
+export async function findOpenConnections(
+  database: TestDatabase,
+  patienceMs = 2000,
+): Promise<string[]> {
+  return withClient(maintenanceUrl(), async (client) => {
+    const end = Date.now() + patienceMs;
+    for (;;) {
+      const { rows } = await client.query<{ application: string; statement: string }>(
+        `select application_name as application, left(query, 120) as statement
+           from pg_stat_activity where datname = $1 and backend_type = 'client backend'`,
+        [database.name],
+      );
+      if (rows.length === 0 || Date.now() > end) {
+        return rows.map((row) => `${row.application || 'unnamed'}: ${row.statement}`);
+      }
+      await new Promise((resolve) => setTimeout(resolve, 50));
+    }
+  });
+}
+
+/** Drops the database; throws when a pool, a listener or a worker still holds a connection to it. */
+export async function dropTestDatabase(database: TestDatabase): Promise<void> {
+  await closeDatabase();
+  const open = await findOpenConnections(database);
+  await withClient(maintenanceUrl(), (client) =>
+    client.query(`drop database if exists ${database.name} with (force)`),
+  );
+  if (open.length > 0) {
+    throw new Error(`${open.length} connections were left open\n  ${open.join('\n  ')}`);
+  }
+}
+
+/**
+ * The database of this test file: made before the file is imported, dropped after its last hook.
+ * DATABASE_URL holds its address already, so `database()` of models reaches it too.
+ */
+export function withDatabase() {
+  const url = process.env.DATABASE_URL ?? '';
+  const name = new URL(url).pathname.slice(1);
+  if (!name.startsWith('test_')) throw new Error(`${name} is not the database of a test file`);
+  return {
+    name,
+    url,
+    /** Rows of one statement, on a connection of its own, past every model. */
+    query: <Row extends QueryResultRow>(sql: string, values: unknown[] = []): Promise<Row[]> =>
+      withClient(url, async (client) => (await client.query<Row>(sql, values)).rows),
+  };
+}
