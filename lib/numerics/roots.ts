@@ -3,7 +3,7 @@ export interface RootOptions {
   absoluteTolerance?: number;
   /** Half-width relative to the answer; default 4e-16. */
   relativeTolerance?: number;
-  /** Most evaluations; default 200. */
+  /** Most evaluations; default 2000: enough to halve down to the smallest number. */
   maxEvaluations?: number;
 }
 
@@ -25,7 +25,7 @@ export function findRoot(
   b: number,
   options: RootOptions = {},
 ): number {
-  const { absoluteTolerance = 0, relativeTolerance = 4e-16, maxEvaluations = 200 } = options;
+  const { absoluteTolerance = 0, relativeTolerance = 4e-16, maxEvaluations = 2000 } = options;
   let [x0, x1] = [a, b];
   let f0 = f(x0);
   let f1 = f(x1);
