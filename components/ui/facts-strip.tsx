@@ -1,0 +1,35 @@
+import type { ReactNode } from 'react';
+
+export interface Fact {
+  /** A key; the name in plain words. */
+  name: string;
+  value: ReactNode;
+  /** Small, behind the value: "of 287", "(95 %)". */
+  note?: ReactNode;
+  /** Under the value in place of `name`, where it holds italics. */
+  label?: ReactNode;
+  /** A limit: set in the colour of the bound. */
+  isBound?: boolean;
+}
+
+/** Large figures with their names below; they wrap on a narrow screen. */
+export function FactsStrip({ facts }: { facts: Fact[] }) {
+  return (
+    <dl className="mb-3.5 grid grid-cols-2 gap-y-3 border-rule2 border-t border-b border-b-rule py-[11px] md:flex md:flex-wrap">
+      {facts.map((fact) => (
+        <div
+          key={fact.name}
+          className="flex flex-col-reverse justify-end border-rule md:border-l md:px-[26px] md:first:border-l-0 md:first:pl-0"
+        >
+          <dt className="text-ink3 text-note">{fact.label ?? fact.name}</dt>
+          <dd className={`font-semibold text-figure ${fact.isBound ? 'text-bound' : ''}`}>
+            {fact.value}
+            {fact.note !== undefined && (
+              <small className="ml-1.5 font-normal text-ink3 text-note">{fact.note}</small>
+            )}
+          </dd>
+        </div>
+      ))}
+    </dl>
+  );
+}

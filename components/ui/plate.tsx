@@ -1,0 +1,72 @@
+import type { ReactNode } from 'react';
+
+/** The one dark surface of the light theme: holds one statement, at most one a page. */
+export function Plate({
+  children,
+  className = '',
+  id = 'statement',
+}: {
+  children: ReactNode;
+  className?: string;
+  id?: string;
+}) {
+  return (
+    <section
+      id={id}
+      className={`plate rounded-plate px-[22px] pt-[18px] pb-3 max-md:-mx-[22px] max-md:rounded-none md:px-[34px] md:pt-[26px] md:pb-[18px] ${className}`}
+    >
+      {children}
+    </section>
+  );
+}
+
+/** "<5.8 %", with the sign light and the unit at half size. */
+export function StatementNumber({
+  value,
+  unit,
+  sign = '<',
+  fontSizePx,
+  isLive = false,
+}: {
+  value: string;
+  unit?: string;
+  sign?: string;
+  fontSizePx?: number;
+  /** Follows a control: read out politely when it has settled. */
+  isLive?: boolean;
+}) {
+  return (
+    <div
+      className="statement-number my-2.5 -ml-[3px]"
+      style={fontSizePx === undefined ? undefined : { fontSize: fontSizePx }}
+      aria-live={isLive ? 'polite' : undefined}
+    >
+      <span className="sign">{sign}</span>
+      {value}
+      {unit !== undefined && <span className="unit">{unit}</span>}
+    </div>
+  );
+}
+
+/** What the number rests on: name and value, line by line. */
+export function Conditions({ rows }: { rows: { name: string; value: ReactNode }[] }) {
+  return (
+    <dl className="grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-[3px] text-ink2 text-note">
+      {rows.map((row) => (
+        <div key={row.name} className="contents">
+          <dt className="text-ink3">{row.name}</dt>
+          <dd>{row.value}</dd>
+        </div>
+      ))}
+    </dl>
+  );
+}
+
+/** Marks a number that follows an unsaved control. */
+export function LiveMark() {
+  return (
+    <span className="ml-2 inline-block rounded-[2px] border border-bound px-[7px] font-semibold text-bound text-chart">
+      live
+    </span>
+  );
+}
