@@ -1,0 +1,75 @@
+import type { ZodType } from 'zod';
+import { ApiProblem, readProblem } from './api-problem';
+
+export interface RequestOptions {
+  method?: 'GET' | 'POST' | 'PATCH' | 'DELETE';
+  /** Sent as JSON. */
+  body?: unknown;
+  signal?: AbortSignal;
+}
+
+/**
+ * Asks the server and reads the answer by its schema.
+ *
+ * @throws ApiProblem for a refusal, an unreachable server, and an answer of another shape
+ */
+export async function request<T>(
+  path: string,
+  schema: ZodType<T>,
+  options: RequestOptions = {},
+): Promise<T> {
+  const response = await send(path, options);
+  const parsed = schema.safeParse(await response.json());
+  if (parsed.success) return parsed.data;
+  const issue = parsed.error.issues[0];
+  throw new ApiProblem({
+    type: 'about:blank',
+    title: 'Unexpected answer',
+    status: response.status,
+    code: 'unexpected-answer',
+    detail: `The server's answer has an unexpected ${issue.path.join('.') || 'shape'}: ${issue.message}. The page may be older than the server: reload it.`,
+  });
+}
+
+/** The same for an answer without content. */
+export async function requestNothing(path: string, options: RequestOptions): Promise<void> {
+  await send(path, options);
+}
+
+/** The same for numbers sent as bytes. */
+export async function requestBytes(
+  path: string,
+  options: RequestOptions = {},
+): Promise<ArrayBuffer> {
+  const response = await send(path, options, 'application/octet-stream');
+  return response.arrayBuffer();
+}
+
+async function send(
+  path: string,
+  { method = 'GET', body, signal }: RequestOptions,
+  accept = 'application/json',
+): Promise<Response> {
+  const headers: Record<string, string> = { accept };
+  if (body !== undefined) headers['content-type'] = 'application/json';
+  let response: Response;
+  try {
+    response = await fetch(path, {
+      method,
+      headers,
+      signal,
+      body: body === undefined ? undefined : JSON.stringify(body),
+    });
+  } catch (reason) {
+    if (signal?.aborted) throw reason;
+    throw new ApiProblem({
+      type: 'about:blank',
+      title: 'No answer',
+      status: 0,
+      code: 'no-answer',
+      detail: 'No answer from the server. Nothing was changed; check the connection and try again.',
+    });
+  }
+  if (!response.ok) throw await readProblem(response);
+  return response;
+}

@@ -1,0 +1,50 @@
+'use client';
+
+import useSWR from 'swr';
+import { z } from 'zod';
+import {
+  type CreatePopulation,
+  type PopulationDefinition,
+  type PopulationView,
+  populationSchema,
+} from '@/lib/schemas/populations';
+import { apiPath } from './api-path';
+import { request } from './request';
+
+export const populationListSchema = z.object({ populations: z.array(populationSchema) });
+
+/** Every version that the person may see, newest first. */
+export function usePopulations(collaboration: string, fallback?: PopulationView[]) {
+  return useSWR(
+    apiPath(collaboration, 'populations'),
+    async (path) => (await request(path, populationListSchema)).populations,
+    { fallbackData: fallback, revalidateOnFocus: false },
+  );
+}
+
+export function createPopulation(
+  collaboration: string,
+  population: CreatePopulation,
+): Promise<PopulationView> {
+  return request(apiPath(collaboration, 'populations'), populationSchema, {
+    method: 'POST',
+    body: population,
+  });
+}
+
+export interface NewVersion {
+  note?: string;
+  definition: PopulationDefinition;
+}
+
+/** Indices are sent as they are stored, per natural logarithm, and named so. */
+export function savePopulationVersion(
+  collaboration: string,
+  key: string,
+  version: NewVersion,
+): Promise<PopulationView> {
+  return request(apiPath(collaboration, 'populations', key, 'versions'), populationSchema, {
+    method: 'POST',
+    body: { ...version, convention: 'log' },
+  });
+}
