@@ -1,5 +1,7 @@
 /** @type {import('next').NextConfig} */
 const config = {
+  // The browser tests build beside a running product, whose files must stay as they are.
+  distDir: process.env.RAREBOUND_DIST_DIR || '.next',
   agentRules: false,
   poweredByHeader: false,
   reactStrictMode: true,

@@ -2,6 +2,14 @@ import { spawn } from 'node:child_process';
 import { readFileSync } from 'node:fs';
 import { root } from './environment.mjs';
 
+/** @type {Set<import('node:child_process').ChildProcess>} */
+const running = new Set();
+
+/** Ends the programs that `run` has started and that are still going, before this process leaves. */
+export function endRunning() {
+  for (const child of running) child.kill('SIGTERM');
+}
+
 /**
  * Runs a program to its end and keeps what it wrote.
  *
@@ -16,8 +24,11 @@ export function run(command, args, options = {}) {
   const { input, show, ...rest } = options;
   return new Promise((resolve) => {
     const child = spawn(command, args, { cwd: root, ...rest, stdio: ['pipe', 'pipe', 'pipe'] });
+    running.add(child);
     let output = '';
     let stdout = '';
+    child.stdout.setEncoding('utf8');
+    child.stderr.setEncoding('utf8');
     child.stdout.on('data', (chunk) => {
       output += chunk;
       stdout += chunk;
@@ -32,7 +43,10 @@ export function run(command, args, options = {}) {
     child.on('error', (error) =>
       resolve({ code: 127, output: `${output}${error.message}\n`, stdout }),
     );
-    child.on('close', (code) => resolve({ code: code ?? 128, output, stdout }));
+    child.on('close', (code) => {
+      running.delete(child);
+      resolve({ code: code ?? 128, output, stdout });
+    });
   });
 }
 

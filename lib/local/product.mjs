@@ -1,0 +1,82 @@
+import { existsSync, readFileSync } from 'node:fs';
+import path from 'node:path';
+import { LauncherProblem, root } from './environment.mjs';
+import { findFreePort } from './ports.mjs';
+import { run } from './process-run.mjs';
+import { mailboxService, webService, workerService } from './services.mjs';
+
+/**
+ * Where one running product lives; `npm start` and the browser tests each have their own.
+ *
+ * @typedef {object} Product
+ * @property {() => string} databaseUrl asked at each start: the port of the database may change
+ * @property {string} folder for mail and what the seed writes
+ * @property {string} bundleFolder of worker, mailbox and scripts
+ * @property {string} distFolder of the web build
+ * @property {number} port
+ * @property {string} address
+ * @property {{ mailUrl: string, mailboxUrl?: string, smtpPort?: number }} mail
+ * @property {Record<string, string>} secrets
+ * @property {boolean} isDevelopment
+ */
+
+/** Addresses of the local mailbox, or the mail server that MAIL_URL names. */
+export async function chooseMail(/** @type {number} */ webPort, given = process.env.MAIL_URL) {
+  if (given) return { mailUrl: given, mailboxUrl: process.env.MAILBOX_URL };
+  const pagePort = await findFreePort(webPort + 1, [webPort]);
+  const smtpPort = await findFreePort(pagePort + 1, [webPort, pagePort]);
+  return {
+    mailUrl: `smtp://127.0.0.1:${smtpPort}`,
+    mailboxUrl: `http://127.0.0.1:${pagePort}`,
+    smtpPort,
+  };
+}
+
+/** @returns {NodeJS.ProcessEnv} what each process of the product is told */
+export function productEnvironment(/** @type {Product} */ product) {
+  const { mailUrl, mailboxUrl } = product.mail;
+  return {
+    ...process.env,
+    NODE_ENV: product.isDevelopment ? 'development' : 'production',
+    DATABASE_URL: product.databaseUrl(),
+    NEXTAUTH_URL: product.address,
+    ...product.secrets,
+    MAIL_URL: mailUrl,
+    ...(mailboxUrl === undefined ? {} : { MAILBOX_URL: mailboxUrl }),
+    RAREBOUND_DATA_DIR: product.folder,
+    NEXT_TELEMETRY_DISABLED: '1',
+  };
+}
+
+/** Runs one of the bundled scripts to its end. */
+export async function runScript(/** @type {Product} */ product, /** @type {string} */ name) {
+  const script = path.join(root, product.bundleFolder, `lib/local/${name}.js`);
+  const { code, output, stdout } = await run(process.execPath, ['--enable-source-maps', script], {
+    env: productEnvironment(product),
+  });
+  if (code !== 0) throw new LauncherProblem(`The step "${name}" failed:\n${output.trim()}`);
+  return stdout.trim();
+}
+
+/**
+ * Starts mailbox, worker and web server, and returns when the web server answers.
+ *
+ * @param {import('./supervisor.mjs').Supervisor} supervisor
+ * @param {Product} product
+ */
+export async function startProduct(supervisor, product) {
+  const environment = () => productEnvironment(product);
+  if (product.mail.smtpPort !== undefined) {
+    await supervisor.start(mailboxService({ ...product, environment }));
+  }
+  await Promise.all([
+    supervisor.start(workerService({ ...product, environment })),
+    supervisor.start(webService({ ...product, environment })),
+  ]);
+}
+
+/** @returns {{ role: string, email: string, password: string }[]} as the seed wrote them */
+export function readDemoSignIns(/** @type {string} */ folder) {
+  const file = path.join(folder, 'demo-sign-ins.json');
+  return existsSync(file) ? JSON.parse(readFileSync(file, 'utf8')) : [];
+}
