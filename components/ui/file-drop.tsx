@@ -42,22 +42,24 @@ export function FileDrop({
     <div>
       <div
         {...getRootProps()}
-        className={`flex flex-wrap items-center justify-between gap-x-6 gap-y-3 rounded border border-dashed px-5 py-6 ${isDragActive ? 'border-act bg-act-soft' : 'border-rule2 bg-surface'}`}
+        className={`rounded border border-dashed px-5 py-6 ${isDragActive ? 'border-act bg-act-soft' : 'border-rule2 bg-surface'}`}
       >
         <input {...getInputProps()} aria-label={label} />
-        <div>
-          <b className="block">{isDragActive ? 'Let go to add them' : label}</b>
-          <span className="text-ink3 text-note">{disabledReason ?? hint}</span>
+        <div className="flex flex-wrap items-center justify-between gap-x-6 gap-y-3">
+          <div>
+            <b className="block">{isDragActive ? 'Let go to add them' : label}</b>
+            <span className="text-ink3 text-note">{disabledReason ?? hint}</span>
+          </div>
+          <button
+            type="button"
+            className={`inline-flex h-9 items-center gap-[7px] rounded border border-rule2 px-3.5 font-semibold max-md:h-11 ${disabledReason === undefined ? 'bg-surface' : 'border-dashed text-ink3'}`}
+            aria-disabled={disabledReason !== undefined || undefined}
+            onClick={open}
+          >
+            <Icon name="document" />
+            Choose {isMultiple ? 'files' : 'a file'}
+          </button>
         </div>
-        <button
-          type="button"
-          className={`inline-flex h-9 items-center gap-[7px] rounded border border-rule2 px-3.5 font-semibold max-md:h-11 ${disabledReason === undefined ? 'bg-surface' : 'border-dashed text-ink3'}`}
-          aria-disabled={disabledReason !== undefined || undefined}
-          onClick={open}
-        >
-          <Icon name="document" />
-          Choose {isMultiple ? 'files' : 'a file'}
-        </button>
       </div>
       {refused.length > 0 && (
         <ul className="mt-2 text-bad text-note" role="alert">

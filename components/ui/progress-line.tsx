@@ -60,7 +60,7 @@ export function ProgressLine({
           {time}
         </span>
       )}
-      {action}
+      {action !== undefined && <div className="max-md:order-last max-md:col-span-3">{action}</div>}
     </div>
   );
 }

@@ -88,7 +88,7 @@ interface CellProps extends TdHTMLAttributes<HTMLTableCellElement> {
 }
 
 export function Cell({ isNumeric = false, isRowHead = false, className = '', ...cell }: CellProps) {
-  const look = `h-[34px] px-2.5 py-1.5 align-middle first:pl-0 last:pr-0 in-[tr[aria-selected]]:first:pl-2.5 ${isNumeric ? 'whitespace-nowrap text-right' : 'text-left'} ${className}`;
+  const look = `h-[34px] px-2.5 py-1.5 align-middle first:pl-0 last:pr-0 ${isNumeric ? 'whitespace-nowrap text-right' : 'text-left'} ${className}`;
   return isRowHead ? (
     <th {...cell} scope="row" className={`${look} font-semibold`} />
   ) : (
@@ -100,7 +100,7 @@ export function Cell({ isNumeric = false, isRowHead = false, className = '', ...
 export function ErrorTerm({ children }: { children: ReactNode }) {
   return (
     <span className="text-ink3">
-      {`\u2009±\u2009`}
+      {'\u00a0±\u00a0'}
       {children}
     </span>
   );
