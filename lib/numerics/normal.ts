@@ -1,7 +1,7 @@
 import { complementaryErrorFunction } from './error-function';
 
 const SQRT_HALF = Math.SQRT1_2;
-const LOG_SQRT_TWO_PI = 0.918938533204672741780329736406;
+const LOG_SQRT_TWO_PI = 0.9189385332046728;
 
 /**
  * Density of the standard normal, exp(-z²/2)/√(2π).
