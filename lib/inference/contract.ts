@@ -1,5 +1,6 @@
-/** F may exceed 1, f may not: they never share a variable, and every result names which one it is. */
-export type RateQuantity = 'companions_per_star' | 'host_fraction';
+import type { RateQuantity } from '@/lib/quantities/display';
+
+export type { RateQuantity };
 
 /** `mean-number`: Poisson in F; `host-fraction`: one Bernoulli trial per star in f. */
 export type Likelihood = 'mean-number' | 'host-fraction';
