@@ -1,11 +1,8 @@
-import { gammaQ } from './incomplete-gamma';
-
 export { betaQuantile, regularisedBeta } from './incomplete-beta';
 export { gammaP, gammaQ, gammaQuantile, gammaQuantileUpper } from './incomplete-gamma';
 export { logBeta, logGamma } from './log-gamma';
 
 const EULER_GAMMA = 0.5772156649015329;
-const SQRT_2PI = Math.sqrt(2 * Math.PI);
 
 /**
  * Exponential integral E1(x), the integral of e^(-t)/t from x to infinity.
@@ -68,47 +65,4 @@ export function powerLawIntegral(index: number, from: number, to: number): numbe
   const product = index * logRatio;
   const quotient = Math.abs(product) < 1e-12 ? 1 + product / 2 : Math.expm1(product) / product;
   return from ** index * logRatio * quotient;
-}
-
-/** Density of the standard normal at z [1]. */
-export function normalDensity(z: number): number {
-  return Math.exp(-0.5 * z * z) / SQRT_2PI;
-}
-
-/**
- * Probability that a standard normal lies below z.
- *
- * @param z scalar [1]
- * @returns 0..1, with full relative precision in the lower tail down to z = -37
- * @example normalCumulative(-5) // 2.86651571879194e-7
- */
-export function normalCumulative(z: number): number {
-  if (z === 0) return 0.5;
-  const tail = 0.5 * gammaQ(0.5, 0.5 * z * z);
-  return z < 0 ? tail : 1 - tail;
-}
-
-/**
- * z below which a standard normal lies with probability p.
- *
- * @param p scalar [1], 0 < p < 1
- * @throws RangeError outside (0, 1)
- * Accuracy: 1e-14 relative in the lower tail, limited by 1 - p in the upper one.
- * @source start value: Abramowitz & Stegun 1964, 26.2.23; then Halley steps
- * @example normalQuantile(0.05) // -1.64485362695147
- */
-export function normalQuantile(p: number): number {
-  if (!(p > 0 && p < 1)) throw new RangeError(`normal quantile needs 0 < p < 1, got ${p}`);
-  if (p === 0.5) return 0;
-  const lower = Math.min(p, 1 - p);
-  const t = Math.sqrt(-2 * Math.log(lower));
-  let z =
-    (2.515517 + t * (0.802853 + t * 0.010328)) /
-      (1 + t * (1.432788 + t * (0.189269 + t * 0.001308))) -
-    t;
-  for (let step = 0; step < 3; step++) {
-    const newton = (normalCumulative(z) - lower) / normalDensity(z);
-    z -= newton / (1 + 0.5 * z * newton);
-  }
-  return p < 0.5 ? z : -z;
 }
