@@ -10,6 +10,8 @@ const environment = z.object({
   MAIL_FROM: z.string().default('rarebound@localhost'),
   RAREBOUND_DATA_DIR: z.string().default('.data'),
   RAREBOUND_WORKER_THREADS: z.coerce.number().int().min(1).optional(),
+  /** 'yes' when a proxy of ours stands before the server and writes X-Forwarded-For. */
+  RAREBOUND_BEHIND_PROXY: z.enum(['yes', 'no']).default('no'),
   NODE_ENV: z.string().default('development'),
 });
 
@@ -23,6 +25,7 @@ export interface Config {
   mailFrom: string;
   dataDirectory: string;
   workerThreads: number | undefined;
+  isBehindProxy: boolean;
   isProduction: boolean;
 }
 
@@ -45,6 +48,7 @@ export function config(): Config {
     mailFrom: env.MAIL_FROM,
     dataDirectory: env.RAREBOUND_DATA_DIR,
     workerThreads: env.RAREBOUND_WORKER_THREADS,
+    isBehindProxy: env.RAREBOUND_BEHIND_PROXY === 'yes',
     isProduction: env.NODE_ENV === 'production',
   };
   return parsed;
