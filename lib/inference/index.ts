@@ -1,4 +1,29 @@
+export type {
+  Answer,
+  AnswerInputs,
+  AnswerSettings,
+  Detection,
+  DetectionSetAside,
+  PopulationView,
+  SetAsideReason,
+  StackedMaps,
+  SummedMap,
+} from './answer';
+export { answerFromView, answerQuestion, countDetections, viewPopulation } from './answer';
 export type { Likelihood, RatePosterior, RatePrior, RateQuantity, RateQuestion } from './contract';
+export type { ExposureContributions } from './contributions';
+export { exposureContributions } from './contributions';
+export type { PosteriorCurve } from './curve';
+export { displayRange, posteriorCurve } from './curve';
+export {
+  binomialLowerLimit,
+  binomialUpperLimit,
+  hostFractionUpperLimit,
+  poissonBinomial,
+  poissonLowerLimit,
+  poissonUpperLimit,
+  wilsonInterval,
+} from './frequentist';
 export { logNoDetection } from './host-fraction';
 export {
   equalTailedInterval,
@@ -6,4 +31,14 @@ export {
   isSetByPrior,
   upperLimit,
 } from './intervals';
+export type { LevelLimit } from './levels';
+export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
 export { ratePosterior } from './posterior';
+export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
+export {
+  describeLevel,
+  describeLimit,
+  describePlanets,
+  describePopulation,
+  describePrior,
+} from './statement';
