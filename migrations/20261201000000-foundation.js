@@ -101,7 +101,7 @@ create table upload (
   file_name text not null check (length(file_name) between 1 and 200),
   byte_length bigint not null check (byte_length >= 0),
   sha256 text not null check (sha256 ~ '^[0-9a-f]{64}$'),
-  state text not null check (state in ('read','refused','stored')),
+  state text not null check (state in ('read','stored')),
   settings jsonb not null default '{}',
   report jsonb not null default '{}',
   uploaded_by uuid references person(id) on delete set null,

@@ -17,6 +17,8 @@ export const uploadQuerySchema = z.strictObject({
   /** Needed for every kind but cooling tables. */
   survey: z.string().optional(),
   name: lineSchema(200),
+  /** Settings for the first reading, as JSON. */
+  settings: z.string().max(100_000).optional(),
 });
 
 /** What a person may decide between reading and storing; each change reads the file again. */
@@ -35,6 +37,7 @@ export type UploadSettings = z.infer<typeof uploadSettingsSchema>;
 
 export const noteSchema = z.object({
   code: z.string(),
+  level: z.enum(['information', 'warning']),
   line: z.number().optional(),
   column: z.string().optional(),
   item: z.string().optional(),
@@ -76,7 +79,7 @@ export const uploadSchema = z.object({
   fileName: z.string(),
   byteLength: z.number(),
   sha256: z.string(),
-  state: z.enum(['read', 'refused', 'stored']),
+  state: z.enum(['read', 'stored']),
   settings: uploadSettingsSchema,
   report: uploadReportSchema,
   uploadedBy: z.string().nullable(),

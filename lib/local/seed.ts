@@ -1,0 +1,217 @@
+import { type ChildProcess, spawn } from 'node:child_process';
+import { writeFile } from 'node:fs/promises';
+import path from 'node:path';
+import { type Actor, EVERY_SCOPE } from '@/lib/access/actor';
+import { hashPassword } from '@/lib/access/passwords';
+import { config } from '@/lib/config';
+import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
+import { listCoolingTables } from '@/lib/services/cooling-tables';
+import { closeReaders } from '@/lib/services/reading';
+import { createSurvey, listSurveys } from '@/lib/services/surveys';
+import { createToken } from '@/lib/services/tokens';
+import {
+  CollaborationRow,
+  closeDatabase,
+  inTransaction,
+  JobRow,
+  MemberRow,
+  PersonRow,
+} from '@/models';
+import { askQuestions } from './demo/analyses';
+import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
+import { demoPeople, makePassword } from './demo/people';
+import { type DemoSurvey, demoSurveys, drawSky } from './demo/sky';
+import { bringIn } from './demo/store';
+
+const SLUG = 'breakwater';
+const say = (text: string) => process.stdout.write(`${text}\n`);
+
+interface SignIn {
+  role: string;
+  email: string;
+  password: string;
+}
+
+async function makePeople(): Promise<{ actors: Map<string, Actor>; signIns: SignIn[] }> {
+  const signIns: SignIn[] = [];
+  const actors = new Map<string, Actor>();
+  const made = await Promise.all(
+    demoPeople.map(async (person) => {
+      const password = makePassword();
+      return { person, password, passwordHash: await hashPassword(password) };
+    }),
+  );
+  await inTransaction(async (transaction) => {
+    const collaboration = await CollaborationRow.create(
+      { slug: SLUG, name: 'Breakwater' },
+      { transaction },
+    );
+    for (const { person, password, passwordHash } of made) {
+      const email = `${person.key}@breakwater.example`;
+      const row = await PersonRow.create(
+        { email, name: person.name, passwordHash },
+        { transaction },
+      );
+      await MemberRow.create(
+        { collaborationId: collaboration.id, personId: row.id, roles: person.roles },
+        { transaction },
+      );
+      actors.set(person.key, {
+        personId: row.id,
+        personName: person.name,
+        email,
+        collaborationId: collaboration.id,
+        collaboration: SLUG,
+        roles: person.roles,
+        via: 'session',
+        scopes: [...EVERY_SCOPE],
+      });
+      if (person.isShown) signIns.push({ role: person.roles[0], email, password });
+    }
+  });
+  return { actors, signIns };
+}
+
+async function finishJob(jobId: string): Promise<void> {
+  for (;;) {
+    const job = await JobRow.findByPk(jobId);
+    if (job?.status === 'done') return;
+    if (!job || job.status === 'failed' || job.status === 'cancelled') {
+      throw new Error(`job ${jobId} ended without a result: ${job?.fault ?? 'it is gone'}`);
+    }
+    await new Promise((resolve) => setTimeout(resolve, 100));
+  }
+}
+
+async function importSurvey(
+  actor: Actor,
+  survey: DemoSurvey,
+  stars: ReturnType<typeof drawSky>,
+): Promise<string> {
+  const own = stars.filter((star) => star.surveys.includes(survey.slug));
+  const [table] = await listCoolingTables(actor);
+  const made = await createSurvey(actor, {
+    name: survey.name,
+    slug: survey.slug,
+    band: survey.band,
+    description: survey.description,
+    observedFrom: survey.from,
+    observedTo: survey.to,
+    mapSettings: mapSettingsSchema.parse({ cooling: { kind: 'table', coolingTableId: table.id } }),
+  });
+  await bringIn(
+    actor,
+    'targets',
+    `${survey.slug}-targets.csv`,
+    targetsFile(survey, own),
+    survey.slug,
+  );
+  await bringIn(
+    actor,
+    'contrast-curves',
+    `${survey.slug}-curves.csv`,
+    curvesFile(survey, own),
+    survey.slug,
+  );
+  const job = await JobRow.findOne({
+    where: { surveyId: made.id },
+    order: [['createdAt', 'DESC']],
+  });
+  if (!job) throw new Error(`the curves of ${survey.name} started no maps`);
+  await finishJob(job.id);
+  await bringIn(
+    actor,
+    'companions',
+    `${survey.slug}-companions.csv`,
+    companionsFile(survey, own),
+    survey.slug,
+  );
+  say(`${survey.name}: ${own.length} targets, maps computed`);
+  return made.id;
+}
+
+function startWorker(): ChildProcess {
+  return spawn(process.execPath, ['--enable-source-maps', path.resolve('dist/workers/main.js')], {
+    env: { ...process.env },
+    stdio: ['ignore', 'ignore', 'inherit'],
+  });
+}
+
+async function writeSecret(name: string, text: string): Promise<void> {
+  await writeFile(path.join(config().dataDirectory, name), text, { mode: 0o600 });
+}
+
+/** An earlier start that was stopped in the middle leaves parts; they go before a new beginning. */
+async function removeHalfMade(collaboration: CollaborationRow): Promise<void> {
+  await inTransaction(async (transaction) => {
+    await collaboration.destroy({ transaction });
+    const emails = demoPeople.map((person) => `${person.key}@breakwater.example`);
+    await PersonRow.destroy({ where: { email: emails }, transaction });
+  });
+}
+
+async function seed(): Promise<void> {
+  const known = await CollaborationRow.findOne({ where: { slug: SLUG } });
+  if (known?.settings.isDemonstrationReady === true) {
+    say('the demonstration is there already');
+    return;
+  }
+  if (known) await removeHalfMade(known);
+  const worker = startWorker();
+  const ended = new Promise<void>((resolve) => worker.once('exit', () => resolve()));
+  try {
+    const { actors, signIns } = await makePeople();
+    const actorOf = (key: string) => {
+      const actor = actors.get(key);
+      if (!actor) throw new Error(`nobody is called ${key}`);
+      return actor;
+    };
+    await bringIn(
+      actorOf('castellan'),
+      'cooling-tables',
+      'warm-harbour.csv',
+      coolingFile(0),
+      undefined,
+      {
+        title: 'Harbour, high-entropy start',
+      },
+    );
+    const stars = drawSky();
+    const ids: Record<string, string> = {};
+    for (const survey of demoSurveys)
+      ids[survey.slug] = await importSurvey(actorOf(survey.lead), survey, stars);
+    await askQuestions({
+      actors: { statistician: actorOf('linhart'), student: actorOf('hadley') },
+      surveyIds: ids as never,
+      finish: finishJob,
+    });
+    const { token } = await createToken(actorOf('linhart'), {
+      name: 'Demonstration',
+      scopes: ['read', 'write', 'run'],
+      days: 365,
+    });
+    await writeSecret('demo-token', `${token}\n`);
+    await writeSecret('demo-sign-ins.json', `${JSON.stringify(signIns, null, 2)}\n`);
+    await CollaborationRow.update(
+      { settings: { isDemonstrationReady: true } },
+      { where: { slug: SLUG } },
+    );
+    const { stars: count, entries } = await listSurveys(actorOf('castellan'));
+    say(`${count} stars in ${entries} entries, and the demonstration's analyses, are ready`);
+  } finally {
+    worker.kill('SIGTERM');
+    await ended;
+  }
+}
+
+seed()
+  .catch((error: unknown) => {
+    process.stderr.write(
+      `${error instanceof Error ? (error.stack ?? error.message) : String(error)}\n`,
+    );
+    process.exitCode = 1;
+  })
+  .finally(async () => {
+    await closeReaders();
+    await closeDatabase();
+  });

@@ -1,0 +1,22 @@
+import type { Actor } from '@/lib/access/actor';
+import { demand } from '@/lib/access/permissions';
+import type { CoolingTableView } from '@/lib/schemas/surveys';
+import { CoolingTableRow } from '@/models';
+
+/** Cooling tables of the collaboration, by name. */
+export async function listCoolingTables(actor: Actor): Promise<CoolingTableView[]> {
+  demand(actor, 'read');
+  const rows = await CoolingTableRow.findAll({
+    where: { collaborationId: actor.collaborationId },
+    order: [['name', 'ASC']],
+  });
+  return rows.map((row) => ({
+    id: row.id,
+    name: row.name,
+    bands: Object.keys(row.magnitudes),
+    massMjup: row.massMjup,
+    ageMyr: row.ageMyr,
+    digest: row.digest,
+    createdAt: row.createdAt.toISOString(),
+  }));
+}

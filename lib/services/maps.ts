@@ -1,0 +1,126 @@
+import type { Actor } from '@/lib/access/actor';
+import { demand } from '@/lib/access/permissions';
+import { Conflict, NotFound } from '@/lib/errors';
+import { enqueueMaps } from '@/lib/queue/enqueue';
+import { idSchema } from '@/lib/schemas/common';
+import type { JobView } from '@/lib/schemas/jobs';
+import type { MapView } from '@/lib/schemas/sensitivity';
+import { CompletenessMapRow, inTransaction, JobRow, TargetRow } from '@/models';
+import { unpackMap } from '@/models/map-values';
+import { recordAudit } from './audit';
+import { describeJob } from './jobs';
+import { findSurvey, isLead } from './surveys';
+
+async function findMap(actor: Actor, id: string): Promise<CompletenessMapRow> {
+  demand(actor, 'read');
+  const isId = idSchema.safeParse(id).success;
+  const row = isId
+    ? await CompletenessMapRow.findOne({ where: { id, collaborationId: actor.collaborationId } })
+    : null;
+  if (!row) throw new NotFound('completeness map');
+  return row;
+}
+
+/** A stored map with its axes and with what it was made from. */
+export async function getMap(actor: Actor, id: string): Promise<MapView> {
+  const row = await findMap(actor, id);
+  const values = unpackMap(row.nodeValues);
+  const columns = row.semiMajorAxisAu.length;
+  return {
+    id: row.id,
+    digest: row.digest,
+    origin: row.origin,
+    engineVersion: row.engineVersion,
+    checksum: row.checksum,
+    massMjup: row.massMjup,
+    semiMajorAxisAu: row.semiMajorAxisAu,
+    completeness: row.massMjup.map((_, i) => [...values.subarray(i * columns, (i + 1) * columns)]),
+    report: row.report,
+    inputs: row.inputs,
+  };
+}
+
+/** The stored bytes: uint16 little-endian, row-major [mass, semi-major axis], and their digest. */
+export async function getMapBytes(actor: Actor, id: string) {
+  const row = await findMap(actor, id);
+  return {
+    bytes: row.nodeValues,
+    digest: row.digest,
+    shape: [row.massMjup.length, row.semiMajorAxisAu.length] as const,
+  };
+}
+
+export interface SurveyMaps {
+  job: JobView | null;
+  maps: {
+    target: string;
+    targetId: string;
+    mapId: string | null;
+    state: string;
+    fault: string | null;
+    digest: string | null;
+    checksum: string | null;
+  }[];
+}
+
+/** The state of each target's map, and the newest computation. */
+export async function listSurveyMaps(actor: Actor, slug: string): Promise<SurveyMaps> {
+  const survey = await findSurvey(actor, slug);
+  const [targets, job] = await Promise.all([
+    TargetRow.findAll({
+      where: { surveyId: survey.id },
+      include: [{ model: CompletenessMapRow, as: 'map', attributes: ['digest', 'checksum'] }],
+      order: [['foldedName', 'ASC']],
+    }),
+    JobRow.findOne({
+      where: { surveyId: survey.id, kind: 'compute-maps' },
+      order: [['createdAt', 'DESC']],
+    }),
+  ]);
+  return {
+    job: job && (await describeJob(job)),
+    maps: targets.map((target) => {
+      const map = (target as TargetRow & { map: CompletenessMapRow | null }).map;
+      return {
+        target: target.name,
+        targetId: target.id,
+        mapId: target.mapId,
+        state: target.mapState,
+        fault: target.mapFault,
+        digest: map?.digest ?? null,
+        checksum: map?.checksum ?? null,
+      };
+    }),
+  };
+}
+
+/** Starts the computation of every map of the survey that is not there yet. */
+export async function startMaps(actor: Actor, slug: string): Promise<JobView> {
+  const survey = await findSurvey(actor, slug);
+  demand(actor, 'import', { isLead: isLead(actor, survey) });
+  const jobId = await inTransaction(async (transaction) => {
+    const withCurve = await TargetRow.count({
+      where: { surveyId: survey.id },
+      include: [{ association: 'curves', where: { replacedAt: null }, required: true }],
+      distinct: true,
+      transaction,
+    });
+    if (withCurve === 0) throw new Conflict('No target of this survey has a contrast curve yet');
+    const id = await enqueueMaps(transaction, {
+      collaborationId: actor.collaborationId,
+      surveyId: survey.id,
+      requestedBy: actor.personId,
+    });
+    await recordAudit(
+      actor,
+      'import',
+      { kind: 'survey', id: survey.id },
+      `started the maps of ${survey.name}`,
+      transaction,
+    );
+    return id;
+  });
+  const job = await JobRow.findByPk(jobId);
+  if (!job) throw new NotFound('job');
+  return describeJob(job);
+}

@@ -1,0 +1,87 @@
+import { type Population, populationWeights } from '@/lib/population';
+import { type MapGrid, regridNodes } from '@/lib/sensitivity';
+import { CompletenessMapRow, PopulationRow } from '@/models';
+import { unpackMap } from '@/models/map-values';
+
+/** One map seen through a population: its mean, and its profile along semi-major axis. */
+interface MapSummary {
+  probability: number;
+  /** Mass-averaged completeness at each node of the grid asked for. */
+  profile: Float64Array;
+}
+
+/** Enough for some twenty surveys of 300 stars under one population; the oldest entry goes first. */
+const CACHE_SIZE = 6000;
+const cache = new Map<string, MapSummary>();
+
+/** Shape for surveys of a collaboration that has shared no population yet: flat in both logarithms. */
+const FLAT: Population = {
+  form: 'power-law',
+  massMinMjup: 2,
+  massMaxMjup: 30,
+  semiMajorAxisMinAu: 10,
+  semiMajorAxisMaxAu: 300,
+  massIndex: 0,
+  semiMajorAxisIndex: 0,
+};
+
+export interface Yardstick {
+  population: Population;
+  key: string;
+  isShared: boolean;
+}
+
+/** The population through which lists show sensitivity: the newest that is shared. */
+export async function currentYardstick(collaborationId: string): Promise<Yardstick> {
+  const row = await PopulationRow.findOne({
+    where: { collaborationId, isShared: true },
+    order: [['createdAt', 'DESC']],
+  });
+  return row
+    ? { population: row.definition, key: row.digest, isShared: true }
+    : { population: FLAT, key: 'flat', isShared: false };
+}
+
+function summarise(row: CompletenessMapRow, yardstick: Yardstick, grid: MapGrid): MapSummary {
+  const own = {
+    massMjup: Float64Array.from(row.massMjup),
+    semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
+    completeness: unpackMap(row.nodeValues),
+  };
+  const { map } = regridNodes(own, grid);
+  const weights = populationWeights(grid, yardstick.population);
+  const columns = grid.semiMajorAxisAu.length;
+  const profile = new Float64Array(columns);
+  weights.mass.forEach((weight, i) => {
+    if (weight === 0) return;
+    for (let j = 0; j < columns; j++) profile[j] += weight * map.completeness[i * columns + j];
+  });
+  let probability = 0;
+  for (let j = 0; j < columns; j++) probability += weights.semiMajorAxis[j] * profile[j];
+  return { probability, profile };
+}
+
+/** Summaries of maps by id; each map is read and averaged once per population and grid. */
+export async function summariseMaps(
+  collaborationId: string,
+  mapIds: string[],
+  yardstick: Yardstick,
+  grid: MapGrid,
+): Promise<Map<string, MapSummary>> {
+  const gridKey = `${grid.massMjup.length}x${grid.semiMajorAxisAu.length}:${grid.semiMajorAxisAu[0]}:${grid.semiMajorAxisAu.at(-1)}:${grid.massMjup[0]}:${grid.massMjup.at(-1)}`;
+  const keyOf = (id: string) => `${id}|${yardstick.key}|${gridKey}`;
+  const missing = [...new Set(mapIds)].filter((id) => !cache.has(keyOf(id)));
+  for (let start = 0; start < missing.length; start += 100) {
+    const rows = await CompletenessMapRow.findAll({
+      where: { collaborationId, id: missing.slice(start, start + 100) },
+    });
+    for (const row of rows) cache.set(keyOf(row.id), summarise(row, yardstick, grid));
+  }
+  const found = new Map<string, MapSummary>();
+  for (const id of mapIds) {
+    const summary = cache.get(keyOf(id));
+    if (summary) found.set(id, summary);
+  }
+  while (cache.size > CACHE_SIZE) cache.delete(cache.keys().next().value as string);
+  return found;
+}

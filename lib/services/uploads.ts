@@ -1,0 +1,369 @@
+import { readFile } from 'node:fs/promises';
+import { UniqueConstraintError } from 'sequelize';
+import type { Actor } from '@/lib/access/actor';
+import { demand } from '@/lib/access/permissions';
+import { Conflict, InputError, NotFound } from '@/lib/errors';
+import type { KnownMap, ReadContext, ReadResult, UploadKind } from '@/lib/formats';
+import { enqueueMaps } from '@/lib/queue/enqueue';
+import { idSchema } from '@/lib/schemas/common';
+import {
+  type UploadReport,
+  type UploadSettings,
+  type UploadView,
+  uploadSettingsSchema,
+} from '@/lib/schemas/uploads';
+import { BUILT_IN_BANDS } from '@/lib/sensitivity';
+import {
+  CompletenessMapRow,
+  CoolingTableRow,
+  inTransaction,
+  PersonRow,
+  SurveyRow,
+  TargetRow,
+  UploadRow,
+} from '@/models';
+import { unpackMap } from '@/models/map-values';
+import { recordAudit } from './audit';
+import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
+import { planCompanions } from './intake/companions';
+import { planCompletenessMaps } from './intake/completeness-maps';
+import { planContrastCurves } from './intake/contrast-curves';
+import { planCoolingTable } from './intake/cooling-table';
+import type { Plan } from './intake/plan';
+import { planTargets } from './intake/targets';
+import { readOnThread } from './reading';
+import { findSurvey, isLead } from './surveys';
+
+interface Source {
+  kind: UploadKind;
+  fileName: string;
+  survey: SurveyRow | null;
+  settings: UploadSettings;
+}
+
+async function bandsOf(survey: SurveyRow): Promise<string[]> {
+  const { cooling } = survey.mapSettings;
+  if (cooling.kind === 'built-in') return [...BUILT_IN_BANDS];
+  const table = await CoolingTableRow.findByPk(cooling.coolingTableId);
+  return table ? Object.keys(table.magnitudes) : [];
+}
+
+async function mapsByName(targets: TargetRow[]): Promise<Map<string, KnownMap>> {
+  const rows = await CompletenessMapRow.findAll({
+    where: { id: targets.flatMap((target) => (target.mapId ? [target.mapId] : [])) },
+  });
+  const byId = new Map(rows.map((row) => [row.id, row]));
+  const maps = new Map<string, KnownMap>();
+  for (const target of targets) {
+    const row = target.mapId ? byId.get(target.mapId) : undefined;
+    if (!row) continue;
+    maps.set(target.name, {
+      massMjup: row.massMjup,
+      semiMajorAxisAu: row.semiMajorAxisAu,
+      completeness: [...unpackMap(row.nodeValues)],
+    });
+  }
+  return maps;
+}
+
+async function contextOf(source: Source): Promise<ReadContext> {
+  const { survey, settings, kind, fileName } = source;
+  const context: ReadContext = {
+    fileName,
+    kind,
+    defaultTarget: settings.defaultTarget,
+    notMeasuredIsZero: settings.notMeasuredIsZero,
+    columnMap: settings.columnMap,
+    leaveOut: settings.leaveOut,
+  };
+  if (!survey || kind === 'targets') return context;
+  const targets = await TargetRow.findAll({ where: { surveyId: survey.id } });
+  context.targetNames = targets.map((target) => ({
+    name: target.name,
+    otherNames: target.otherNames,
+  }));
+  if (kind === 'contrast-curves') {
+    context.bands = await bandsOf(survey);
+    context.defaultBand = survey.band;
+  }
+  if (kind === 'companions') context.maps = await mapsByName(targets);
+  return context;
+}
+
+async function planOf(
+  actor: Actor,
+  source: Source,
+  read: ReadResult & { ok: true },
+): Promise<Plan> {
+  const leaveOut = new Set(source.settings.leaveOut ?? []);
+  if (read.kind === 'cooling-tables') {
+    const title = source.settings.title ?? source.fileName.replace(/\.[^.]+$/, '');
+    return planCoolingTable(actor, title, read.records[0]);
+  }
+  if (!source.survey) throw new NotFound('survey');
+  const context = { actor, survey: source.survey, leaveOut };
+  switch (read.kind) {
+    case 'targets':
+      return planTargets(context, read.records);
+    case 'contrast-curves':
+      return planContrastCurves(context, read.records);
+    case 'completeness-maps':
+      return planCompletenessMaps(context, read.records);
+    case 'companions':
+      return planCompanions(context, read.records);
+  }
+}
+
+interface DryRun {
+  plan: Plan;
+  report: UploadReport;
+}
+
+/**
+ * Reads and plans, storing nothing.
+ *
+ * @throws InputError with every fault and its place
+ */
+async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promise<DryRun> {
+  const read = await readOnThread(bytes, await contextOf(source));
+  if (!read.ok) {
+    const faults = read.faults.map((fault) => ({ file: source.fileName, ...fault }));
+    const status = faults.some((fault) => fault.code === 'too-large' && fault.line === undefined)
+      ? 413
+      : 422;
+    throw new InputError(faults, { status, count: read.faultCount });
+  }
+  const plan = await planOf(actor, source, read);
+  if (plan.faults.length > 0) {
+    throw new InputError(
+      plan.faults.slice(0, 100).map((fault) => ({ file: source.fileName, ...fault })),
+      { count: plan.faults.length },
+    );
+  }
+  const report: UploadReport = {
+    container: read.container,
+    rows: read.rowCount,
+    columns: read.columns,
+    notes: [...read.notes, ...plan.notes],
+    faults: [],
+    faultCount: 0,
+    items: plan.items,
+    summary: plan.summary,
+  };
+  return { plan, report };
+}
+
+async function describeUpload(row: UploadRow): Promise<UploadView> {
+  const [survey, person] = await Promise.all([
+    row.surveyId ? SurveyRow.findByPk(row.surveyId) : null,
+    row.uploadedBy ? PersonRow.findByPk(row.uploadedBy) : null,
+  ]);
+  return {
+    id: row.id,
+    kind: row.kind as UploadView['kind'],
+    survey: survey?.slug ?? null,
+    fileName: row.fileName,
+    byteLength: Number(row.byteLength),
+    sha256: row.sha256,
+    state: row.state as UploadView['state'],
+    settings: row.settings as UploadSettings,
+    report: row.report as unknown as UploadReport,
+    uploadedBy: person?.name ?? null,
+    createdAt: row.createdAt.toISOString(),
+    storedAt: row.storedAt?.toISOString() ?? null,
+  };
+}
+
+function parseSettings(text: string | undefined): UploadSettings {
+  if (text === undefined) return {};
+  let given: unknown;
+  try {
+    given = JSON.parse(text);
+  } catch {
+    throw new InputError(
+      { code: 'json-invalid', item: 'query "settings"', expected: 'a JSON object' },
+      { status: 400 },
+    );
+  }
+  const parsed = uploadSettingsSchema.safeParse(given);
+  if (parsed.success) return parsed.data;
+  const issue = parsed.error.issues[0];
+  throw new InputError(
+    { code: 'schema', item: `query "settings", ${issue.path.join('.')}`, message: issue.message },
+    { status: 400 },
+  );
+}
+
+async function surveyFor(
+  actor: Actor,
+  kind: UploadKind,
+  slug: string | undefined,
+): Promise<SurveyRow | null> {
+  if (kind === 'cooling-tables') {
+    demand(actor, 'import', { isLead: true });
+    return null;
+  }
+  if (slug === undefined) {
+    throw new InputError(
+      {
+        code: 'value-missing',
+        item: 'query "survey"',
+        found: 'nothing',
+        expected: 'the survey that the file belongs to',
+      },
+      { status: 400 },
+    );
+  }
+  const survey = await findSurvey(actor, slug);
+  demand(actor, 'import', { isLead: isLead(actor, survey) });
+  return survey;
+}
+
+/** Receives a file, reads every line of it, and keeps it for a person to confirm. A refused file leaves no trace. */
+export async function receiveUpload(
+  actor: Actor,
+  query: { kind: UploadKind; survey?: string; name: string; settings?: string },
+  request: Request,
+): Promise<UploadView> {
+  const survey = await surveyFor(actor, query.kind, query.survey);
+  const source: Source = {
+    kind: query.kind,
+    fileName: query.name,
+    survey,
+    settings: parseSettings(query.settings),
+  };
+  const file: IncomingFile = await receiveFile(request);
+  try {
+    const { report } = await dryRun(actor, source, await readFile(file.path));
+    const row = await inTransaction(async (transaction) => {
+      const created = await UploadRow.create(
+        {
+          collaborationId: actor.collaborationId,
+          surveyId: survey?.id ?? null,
+          kind: query.kind,
+          fileName: query.name,
+          byteLength: file.byteLength,
+          sha256: file.sha256,
+          state: 'read',
+          settings: source.settings,
+          report: report as unknown as Record<string, unknown>,
+          uploadedBy: actor.personId,
+        },
+        { transaction },
+      );
+      await storeParts(created.id, file, transaction);
+      return created;
+    });
+    return await describeUpload(row);
+  } finally {
+    await file.discard();
+  }
+}
+
+async function findUpload(
+  actor: Actor,
+  id: string,
+): Promise<{ row: UploadRow; survey: SurveyRow | null }> {
+  demand(actor, 'read');
+  const isId = idSchema.safeParse(id).success;
+  const row = isId
+    ? await UploadRow.findOne({ where: { id, collaborationId: actor.collaborationId } })
+    : null;
+  if (!row) throw new NotFound('upload');
+  return { row, survey: row.surveyId ? await SurveyRow.findByPk(row.surveyId) : null };
+}
+
+export async function getUpload(actor: Actor, id: string): Promise<UploadView> {
+  return describeUpload((await findUpload(actor, id)).row);
+}
+
+/** Uploads of the collaboration, or of one survey, newest first. */
+export async function listUploads(
+  actor: Actor,
+  slug: string | undefined,
+  page: { limit: number; offset: number },
+): Promise<UploadView[]> {
+  demand(actor, 'read');
+  const survey = slug === undefined ? null : await findSurvey(actor, slug);
+  const rows = await UploadRow.findAll({
+    where: { collaborationId: actor.collaborationId, ...(survey ? { surveyId: survey.id } : {}) },
+    order: [['createdAt', 'DESC']],
+    ...page,
+  });
+  return Promise.all(rows.map(describeUpload));
+}
+
+/** The original bytes, as they came. */
+export async function getUploadBytes(actor: Actor, id: string) {
+  const { row } = await findUpload(actor, id);
+  return { bytes: await loadParts(row.id), fileName: row.fileName, sha256: row.sha256 };
+}
+
+function demandImport(actor: Actor, survey: SurveyRow | null): void {
+  demand(actor, 'import', { isLead: survey ? isLead(actor, survey) : true });
+}
+
+/** Reads the kept file again with other settings. */
+export async function changeUpload(
+  actor: Actor,
+  id: string,
+  settings: UploadSettings,
+): Promise<UploadView> {
+  const { row, survey } = await findUpload(actor, id);
+  demandImport(actor, survey);
+  if (row.state === 'stored')
+    throw new Conflict('This file is stored already; upload it again to change how it is read');
+  const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
+  const { report } = await dryRun(actor, source, await loadParts(row.id));
+  await row.update({ settings, report: report as unknown as Record<string, unknown> });
+  return describeUpload(row);
+}
+
+/** Stores all that the file says in one transaction, and starts the maps that follow from it. */
+export async function storeUpload(actor: Actor, id: string): Promise<UploadView> {
+  const { row, survey } = await findUpload(actor, id);
+  demandImport(actor, survey);
+  if (row.state === 'stored') return describeUpload(row);
+  const source: Source = {
+    kind: row.kind as UploadKind,
+    fileName: row.fileName,
+    survey,
+    settings: row.settings as UploadSettings,
+  };
+  const { plan, report } = await dryRun(actor, source, await loadParts(row.id));
+  try {
+    await inTransaction(async (transaction) => {
+      const [claimed] = await UploadRow.update(
+        {
+          state: 'stored',
+          storedAt: new Date(),
+          report: report as unknown as Record<string, unknown>,
+        },
+        { where: { id: row.id, state: 'read' }, transaction },
+      );
+      if (claimed === 0) return;
+      await plan.apply(transaction, row.id);
+      if (plan.needsMaps && survey) {
+        await enqueueMaps(transaction, {
+          collaborationId: actor.collaborationId,
+          surveyId: survey.id,
+          requestedBy: actor.personId,
+        });
+      }
+      await recordAudit(
+        actor,
+        'import',
+        { kind: 'upload', id: row.id },
+        `stored ${row.fileName}: ${report.summary}`,
+        transaction,
+      );
+    });
+  } catch (error) {
+    if (error instanceof UniqueConstraintError) {
+      throw new Conflict('Somebody stored the same rows meanwhile; read the file again');
+    }
+    throw error;
+  }
+  await row.reload();
+  return describeUpload(row);
+}
