@@ -2,7 +2,6 @@
 
 import useSWR from 'swr';
 import type { RunView } from '@/lib/schemas/runs';
-import { decodeMap } from '@/lib/sensitivity';
 import { apiPath } from './api-path';
 import { ApiProblem } from './api-problem';
 import { requestBytes } from './request';
@@ -12,8 +11,8 @@ export interface StarMaps {
   massMjup: Float64Array;
   semiMajorAxisAu: Float64Array;
   stars: number;
-  /** Shape [star, mass, semi-major axis], row-major, [fraction]. */
-  completeness: Float64Array;
+  /** Shape [star, mass, semi-major axis], row-major: completeness times 65535, as stored. */
+  values: Uint16Array;
 }
 
 /** Fetched once a run: its maps can never change. */
@@ -56,6 +55,6 @@ export function readStarMaps(
     massMjup: Float64Array.from(grid.massMjup),
     semiMajorAxisAu: Float64Array.from(grid.semiMajorAxisAu),
     stars,
-    completeness: decodeMap(values),
+    values,
   };
 }

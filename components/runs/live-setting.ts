@@ -1,9 +1,5 @@
 import { fromLogIndex, toLogIndex } from '@/lib/population';
-import {
-  type AnalysisRecipe,
-  type RatePriorInput,
-  ratePriorSchema,
-} from '@/lib/schemas/analyses';
+import { type AnalysisRecipe, type RatePriorInput, ratePriorSchema } from '@/lib/schemas/analyses';
 import type { PopulationDefinition } from '@/lib/schemas/populations';
 
 /** Everything that follows a control at once, without a run. */
@@ -97,8 +93,7 @@ export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting 
   return {
     definition: definitionFromQuery(query, saved.definition),
     credibleLevel: level > 0 && level < 1 ? level : saved.credibleLevel,
-    detections:
-      query.det === 'none' || query.det === 'counted' ? query.det : saved.detections,
+    detections: query.det === 'none' || query.det === 'counted' ? query.det : saved.detections,
     likelihood:
       query.likelihood === 'mean-number' || query.likelihood === 'host-fraction'
         ? query.likelihood

@@ -1,0 +1,81 @@
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import type { RateQuantity } from '@/lib/inference';
+import { formatPlain, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
+import type { RunResult } from '@/lib/schemas/runs';
+
+interface LevelTableProps {
+  levels: RunResult['levels'];
+  credibleLevel: number;
+  quantity: RateQuantity;
+  detections: number;
+  /** Ranges and priors, since a limit without them says nothing. */
+  foot: React.ReactNode;
+}
+
+/** Limits by level, with and without detections, for the fraction of hosts and the mean number. */
+export function LevelTable({ levels, credibleLevel, quantity, detections, foot }: LevelTableProps) {
+  const isChosen = (level: number) => Math.abs(level - credibleLevel) < 1e-9;
+  const bound = (chosen: boolean, column: RateQuantity) =>
+    chosen && column === quantity ? 'limit' : '';
+  return (
+    <>
+      <Table caption={`Upper limits by credible level, with ${countOf(detections)} and with none`}>
+        <TableHead>
+          <tr>
+            <HeadCell scope="col" aria-hidden="true" className="border-b-0" />
+            <HeadCell scope="colgroup" colSpan={2} className="border-b-rule text-center">
+              {countOf(detections)}
+            </HeadCell>
+            <HeadCell scope="colgroup" colSpan={2} className="border-b-rule text-center">
+              zero detections
+            </HeadCell>
+          </tr>
+          <tr>
+            <HeadCell>level</HeadCell>
+            {[0, 1].map((group) => [
+              <HeadCell key={`f${group}`} isNumeric>
+                <i>f</i>, %
+              </HeadCell>,
+              <HeadCell key={`rate${group}`} isNumeric className="max-sm:whitespace-normal">
+                Poisson rate, %
+              </HeadCell>,
+            ])}
+          </tr>
+        </TableHead>
+        <TableBody>
+          {levels.map((row) => {
+            const chosen = isChosen(row.level);
+            return (
+              <Row key={row.level} isSelected={chosen}>
+                <Cell isRowHead>
+                  {formatPlain(100 * row.level)}
+                  {THIN_SPACE}%
+                </Cell>
+                <Cell isNumeric className={bound(chosen, 'host_fraction')}>
+                  {percentBelow(row.hostFraction)}
+                </Cell>
+                <Cell isNumeric className={bound(chosen, 'companions_per_star')}>
+                  {percentBelow(row.meanNumber)}
+                </Cell>
+                <Cell isNumeric>{percentBelow(row.hostFractionZero)}</Cell>
+                <Cell isNumeric>{percentBelow(row.meanNumberZero)}</Cell>
+              </Row>
+            );
+          })}
+        </TableBody>
+      </Table>
+      <p className="mt-2 text-chart text-ink3">{foot} Poisson rate: planets per 100 stars.</p>
+    </>
+  );
+}
+
+/** "2 detections", "1 detection", "no detection". */
+export function countOf(detections: number): string {
+  if (detections === 0) return 'no detection';
+  return detections === 1 ? '1 detection' : `${detections} detections`;
+}
+
+/** "<5.8", in per cent; a dash where the prior belongs to the other quantity. */
+export function percentBelow(limit: number | null): string {
+  return limit === null ? '–' : `<${formatSignificant(100 * limit, 2)}`;
+}

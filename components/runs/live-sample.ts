@@ -1,0 +1,51 @@
+import type { StarMaps } from '@/components/hooks/use-run-maps';
+import type { Detection } from '@/lib/inference';
+import type { RunInputs } from '@/lib/schemas/runs';
+import type { MapGrid } from '@/lib/sensitivity';
+
+/** What a run was made from, as the live controls need it. */
+export interface LiveSample {
+  grid: MapGrid;
+  stars: RunInputs['stars'];
+  /** Shape [star, mass, semi-major axis], completeness times 65535. */
+  maps: Uint16Array;
+  /** Confirmed companions of these stars, inside the ranges or not. */
+  companions: Detection[];
+}
+
+export function sampleOf(inputs: RunInputs, maps: StarMaps): LiveSample {
+  const indexOf = new Map(inputs.stars.map((star, index) => [star.starId, index]));
+  return {
+    grid: { massMjup: maps.massMjup, semiMajorAxisAu: maps.semiMajorAxisAu },
+    stars: inputs.stars,
+    maps: maps.values,
+    companions: inputs.companions.flatMap(({ starId, name, massMjup, semiMajorAxisAu }) => {
+      const star = indexOf.get(starId);
+      return star === undefined ? [] : [{ star, name, massMjup, semiMajorAxisAu }];
+    }),
+  };
+}
+
+/** The sample without some of its stars: what the chosen surveys alone would give. */
+export function restrictSample(
+  sample: LiveSample,
+  keep: (star: LiveSample['stars'][number]) => boolean,
+): LiveSample {
+  const kept = sample.stars.flatMap((star, index) => (keep(star) ? [index] : []));
+  const size = sample.grid.massMjup.length * sample.grid.semiMajorAxisAu.length;
+  const maps = new Uint16Array(kept.length * size);
+  const movedTo = new Map<number, number>();
+  kept.forEach((from, to) => {
+    maps.set(sample.maps.subarray(from * size, (from + 1) * size), to * size);
+    movedTo.set(from, to);
+  });
+  return {
+    grid: sample.grid,
+    stars: kept.map((index) => sample.stars[index]),
+    maps,
+    companions: sample.companions.flatMap((companion) => {
+      const star = movedTo.get(companion.star);
+      return star === undefined ? [] : [{ ...companion, star }];
+    }),
+  };
+}
