@@ -19,19 +19,28 @@ const rooms = [
 ];
 
 /** Rooms of one rank that may be read by their equals: who holds what is the one exception made for models. */
-const allowedSideways = { access: ['models', 'config'], models: ['config'], population: ['sensitivity'] };
+const allowedSideways = {
+  access: ['models', 'config'],
+  models: ['config'],
+  population: ['sensitivity'],
+};
 
-const rankRules = rooms.map(([name, path, rank]) => ({
-  name: `rank-of-${name}`,
-  severity: 'error',
-  comment: 'architecture: a room imports only from lower ranks',
-  from: { path },
-  to: {
-    path: rooms
-      .filter(([other, , otherRank]) => other !== name && otherRank >= rank && !(allowedSideways[name] ?? []).includes(other))
-      .map(([, otherPath]) => otherPath),
-  },
-}));
+const forbiddenFor = ([name, , rank]) =>
+  rooms
+    .filter(([other, , otherRank]) => other !== name && otherRank >= rank)
+    .filter(([other]) => !(allowedSideways[name] ?? []).includes(other))
+    .map(([, path]) => path);
+
+// An empty list of forbidden paths would forbid every path: the highest rank has no such rule.
+const rankRules = rooms
+  .filter((room) => forbiddenFor(room).length > 0)
+  .map((room) => ({
+    name: `rank-of-${room[0]}`,
+    severity: 'error',
+    comment: 'architecture: a room imports only from lower ranks',
+    from: { path: room[1] },
+    to: { path: forbiddenFor(room) },
+  }));
 
 const pure = '^lib/(quantities|numerics|sensitivity|population|inference)/';
 
@@ -67,16 +76,34 @@ module.exports = {
     {
       name: 'launcher-before-install',
       severity: 'error',
+      comment: 'it installs the packages, so it can use none',
       from: { path: '^lib/local/.*\\.mjs$' },
-      to: { dependencyTypes: ['npm', 'npm-dev'] },
+      to: { pathNot: '^lib/local/.*\\.mjs$', dependencyTypesNot: ['core'] },
+    },
+    {
+      name: 'nobody-imports-what-stands-in',
+      severity: 'error',
+      comment: 'lib/local is for one machine; the product runs without it',
+      from: { pathNot: '^lib/local/' },
+      to: { path: '^lib/local/' },
+    },
+    {
+      name: 'every-import-is-found',
+      severity: 'error',
+      comment: 'a path that leads nowhere has no rank to check',
+      from: {},
+      to: { couldNotResolve: true },
     },
   ],
   options: {
     doNotFollow: { path: 'node_modules' },
     tsConfig: { fileName: 'tsconfig.json' },
     tsPreCompilationDeps: true,
-    includeOnly: '^(app|components|lib|models|workers|proxy\\.ts)',
     moduleSystems: ['es6', 'cjs'],
     skipAnalysisNotInRules: true,
+    enhancedResolveOptions: {
+      exportsFields: ['exports'],
+      conditionNames: ['import', 'require', 'node', 'default', 'types'],
+    },
   },
 };

@@ -1,10 +1,11 @@
 import { spawn } from 'node:child_process';
-import { existsSync, openSync, readFileSync, readlinkSync, rmSync } from 'node:fs';
+import { closeSync, existsSync, openSync, readFileSync, readlinkSync, rmSync } from 'node:fs';
 import path from 'node:path';
 import { saveConnection } from './cluster-files.mjs';
 import { LauncherProblem } from './environment.mjs';
 import { findAnyPort, isPortFree } from './ports.mjs';
 import { isAlive, readProcess, run, wait, waitUntil } from './process-run.mjs';
+import { endWithLauncher } from './service-process.mjs';
 
 /** @typedef {import('./cluster-files.mjs').Cluster} Cluster */
 
@@ -71,21 +72,26 @@ export async function stopServer(/** @type {Cluster} */ cluster) {
   throw new LauncherProblem(`The database server in ${cluster.data} does not stop.`);
 }
 
-/** Starts a server that outlives this process; an already running one is kept. */
-export async function startLastingServer(
-  /** @type {Cluster} */ cluster,
-  /** @type {string} */ logFile,
-) {
+/**
+ * Starts a server outside of any supervisor; an already running one is kept.
+ *
+ * @param {Cluster} cluster
+ * @param {{ logFile: string, outlivesThisProcess: boolean }} options
+ */
+export async function startServer(cluster, { logFile, outlivesThisProcess }) {
+  const words = [path.join(cluster.binaries, 'postgres'), ...serverArguments(cluster)];
+  const guarded = outlivesThisProcess ? words : endWithLauncher(words, 'INT');
   for (let attempt = 0; attempt < 20; attempt += 1) {
     if (findServer(cluster) === null) {
       await prepareServer(cluster);
       const log = openSync(logFile, 'a');
-      const child = spawn(path.join(cluster.binaries, 'postgres'), serverArguments(cluster), {
+      const child = spawn(guarded[0], guarded.slice(1), {
         ...cluster.owner,
         cwd: '/',
         detached: true,
         stdio: ['ignore', log, log],
       });
+      closeSync(log);
       child.unref();
       // Backends of a killed server hold its memory for a moment, and the new one then gives up.
       await waitUntil(() => child.exitCode !== null || isServerReady(cluster), 30_000);

@@ -32,15 +32,21 @@ export function lastLines(/** @type {string} */ file, count = 15) {
     .join('\n');
 }
 
+/** The words of a command after which the kernel ends it when this process is killed. */
+export function endWithLauncher(
+  /** @type {string[]} */ words,
+  /** @type {'TERM' | 'INT'} */ signal,
+) {
+  return existsSync(setpriv) ? [setpriv, '--pdeathsig', signal, '--', ...words] : words;
+}
+
 /**
  * Starts a service's process. A group of its own keeps the terminal's Ctrl-C away from it, so that
- * the launcher can stop the services in order; setpriv has the kernel stop it when the launcher is
- * killed and can stop nothing any more.
+ * the launcher can stop the services in order.
  */
 export function launch(/** @type {Service} */ service, /** @type {string} */ logFile) {
-  const signal = service.stopSignal ?? 'TERM';
   const words = [service.command, ...service.args];
-  const guarded = existsSync(setpriv) ? [setpriv, '--pdeathsig', signal, '--', ...words] : words;
+  const guarded = endWithLauncher(words, service.stopSignal ?? 'TERM');
   const log = openSync(logFile, 'a');
   const child = spawn(guarded[0], guarded.slice(1), {
     cwd: service.cwd,

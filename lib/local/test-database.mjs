@@ -7,7 +7,7 @@ import {
   ensureRoleAndDatabase,
   findServer,
   querySuperuser,
-  startLastingServer,
+  startServer,
   stopServer,
 } from './cluster-server.mjs';
 import { dataFolder, folderDigest, LauncherProblem, root } from './environment.mjs';
@@ -25,16 +25,21 @@ const openTestCluster = () => openCluster('postgres-test', { durable: false });
 /**
  * Starts the cluster of the tests if it is not running and brings the template up to date.
  *
+ * @param {{ outlivesThisProcess: boolean }} options whether a server that this call starts goes on
+ *   when the process ends
  * @returns {Promise<{ url: string, started: boolean, cluster: import('./cluster-files.mjs').Cluster }>}
  *   url: the maintenance database, whose role may create databases; started: whether this call did
  */
-export function prepareTestDatabase() {
+export function prepareTestDatabase({ outlivesThisProcess }) {
   return withExclusive(`test-database-${folderDigest(dataFolder())}`, async () => {
     const cluster = await openTestCluster();
     const started = findServer(cluster) === null;
     const logs = path.join(dataFolder(), 'logs');
     mkdirSync(logs, { recursive: true });
-    await startLastingServer(cluster, path.join(logs, 'postgres-test.log'));
+    await startServer(cluster, {
+      logFile: path.join(logs, 'postgres-test.log'),
+      outlivesThisProcess,
+    });
     await ensureRoleAndDatabase(cluster, maintenanceName);
     await dropAbandoned(cluster);
     await ensureTemplate(cluster);

@@ -1,0 +1,93 @@
+import { existsSync, readFileSync, rmSync } from 'node:fs';
+import path from 'node:path';
+import { databaseAddress, querySuperuser } from './cluster-server.mjs';
+import { installDebianPackage } from './debian.mjs';
+import { dataFolder, LauncherProblem, root } from './environment.mjs';
+import { findFreePort } from './ports.mjs';
+import { run } from './process-run.mjs';
+import { chooseMail, productEnvironment, runScript, startProduct } from './product.mjs';
+import { Supervisor } from './supervisor.mjs';
+import { testDistFolder, testEnvironment } from './test-checks.mjs';
+import { countCommand, countPlaywright } from './test-counts.mjs';
+import { emptyFolder, templateName, testBundleFolder } from './test-database.mjs';
+import { buildWeb, isBuildFresh } from './web-build.mjs';
+
+/** @typedef {import('./test-counts.mjs').Count} Count */
+
+const chromium = '/usr/bin/chromium';
+
+/** @returns {string | null} the folder of an up-to-date build; a product's own is only read */
+const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
+
+/** @returns {Promise<Count>} */
+export async function checkBuild() {
+  if (freshBuild() === null) await buildWeb(testDistFolder);
+  return { passed: 1, failed: 0, notes: [] };
+}
+
+/**
+ * Runs the browser tests against a product of their own: own database with the demo in it, own
+ * ports, own mailbox.
+ *
+ * @param {import('./cluster-files.mjs').Cluster} cluster
+ * @param {{ reportFile: string, onSupervisor: (supervisor: Supervisor) => void }} options
+ * @returns {Promise<Count>}
+ */
+export async function runBrowserTests(cluster, { reportFile, onSupervisor }) {
+  const distFolder = freshBuild();
+  if (distFolder === null) throw new LauncherProblem('There is no build of the web part to test');
+  if (!existsSync(chromium)) await installDebianPackage('chromium', 'for the browser tests');
+  const folder = emptyFolder(path.join(dataFolder(), 'test-browser'));
+  const database = `test_${process.pid}_browser`;
+  await querySuperuser(
+    cluster,
+    `create database ${database} template ${templateName} owner rarebound`,
+  );
+  const supervisor = new Supervisor({
+    logsFolder: path.join(folder, 'logs'),
+    say: (line) => process.stdout.write(`    ${line}\n`),
+  });
+  onSupervisor(supervisor);
+  try {
+    const port = await findFreePort(3310);
+    const product = {
+      databaseUrl: () => databaseAddress(cluster, database),
+      folder,
+      bundleFolder: testBundleFolder,
+      distFolder,
+      port,
+      address: `http://127.0.0.1:${port}`,
+      mail: await chooseMail(port, ''),
+      secrets: { NEXTAUTH_SECRET: 'only-for-the-browser-tests-0123456789' },
+      isDevelopment: false,
+    };
+    await runScript(product, 'seed');
+    await startProduct(supervisor, product);
+    return await runPlaywright(product, reportFile);
+  } finally {
+    await supervisor.stop();
+    await querySuperuser(cluster, `drop database if exists ${database} with (force)`);
+  }
+}
+
+async function runPlaywright(product, reportFile) {
+  rmSync(reportFile, { force: true });
+  const { code, output } = await run(
+    path.join(root, 'node_modules/.bin/playwright'),
+    ['test', '--reporter=line,json'],
+    {
+      env: testEnvironment({
+        BASE_URL: product.address,
+        DATABASE_URL: product.databaseUrl(),
+        MAILBOX_URL: productEnvironment(product).MAILBOX_URL,
+        RAREBOUND_DATA_DIR: product.folder,
+        PLAYWRIGHT_JSON_OUTPUT_FILE: reportFile,
+        FORCE_COLOR: '0',
+      }),
+    },
+  );
+  if (!existsSync(reportFile)) return countCommand({ code: code || 1, output });
+  const count = countPlaywright(JSON.parse(readFileSync(reportFile, 'utf8')), code);
+  if (count.failed === 0) return count;
+  return { ...count, notes: [...count.notes, output.trim(), `Logs: ${product.folder}/logs`] };
+}

@@ -1,0 +1,31 @@
+import { defineConfig } from '@playwright/test';
+
+const baseURL = process.env.BASE_URL;
+if (!baseURL)
+  throw new Error('BASE_URL is not set; run the browser tests with: npm test -- browser');
+
+export default defineConfig({
+  testDir: 'tests/browser',
+  outputDir: 'test-results',
+  workers: 1,
+  forbidOnly: true,
+  timeout: 90_000,
+  expect: { timeout: 15_000 },
+  use: {
+    baseURL,
+    trace: 'retain-on-failure',
+    screenshot: 'only-on-failure',
+    launchOptions: {
+      executablePath: '/usr/bin/chromium',
+      args: [
+        '--no-sandbox',
+        '--disable-gpu',
+        '--disable-quic',
+        '--no-first-run',
+        '--disable-background-networking',
+        '--disable-component-update',
+        '--disable-sync',
+      ],
+    },
+  },
+});
