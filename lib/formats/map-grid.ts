@@ -1,0 +1,26 @@
+import type { Fault } from '@/lib/errors';
+import { uploadLimits } from './limits';
+
+const { mapSideMin, mapSideMax } = uploadLimits;
+
+/** The fault of a map that is too small or too large, or null. */
+export function mapShapeFault(masses: number, semiMajorAxes: number): Fault | null {
+  const sides = [masses, semiMajorAxes];
+  const found = `${masses} x ${semiMajorAxes} (masses x semi-major axes)`;
+  if (sides.some((side) => side < mapSideMin)) {
+    return { code: 'map-shape', found, expected: `at least ${mapSideMin} x ${mapSideMin}` };
+  }
+  if (sides.some((side) => side > mapSideMax)) {
+    return { code: 'map-shape', found, expected: `at most ${mapSideMax} x ${mapSideMax}` };
+  }
+  return null;
+}
+
+/** The rule of both axes: physical values, never logarithms. */
+export function axisRule(what: string, unit: string) {
+  return {
+    above: 0,
+    expected: `${what} greater than 0 ${unit}`,
+    hint: 'Are these logarithms?',
+  };
+}
