@@ -1,0 +1,100 @@
+import { singleEccentricity } from './eccentricity';
+import { largestSeparation, separationCumulative } from './orbits';
+import type { EccentricityLaw } from './types';
+
+/**
+ * F(y) = P(ln ρ < y) of one eccentricity law with its first two antiderivatives, on equal steps in
+ * y. F is the straight line between nodes and the others are its exact integrals, so that weights
+ * taken as their differences add up.
+ */
+export interface SeparationTable {
+  /** y of node 0; F is 0 below it. */
+  start: number;
+  step: number;
+  /** Node values, shape [n + 1]; F is 1 beyond the last. */
+  cumulative: Float64Array;
+  first: Float64Array;
+  second: Float64Array;
+}
+
+/** ρ = 5.5e-4, below which F < 2e-7 for every law but the most eccentric. */
+const START = -7.5;
+const INTERVALS = 16_384;
+/** A law that spreads is sampled until halving an interval moves F by less than this. */
+const SAMPLING_TOLERANCE = 2e-6;
+const COARSE_INTERVAL = 256;
+
+const tables = new Map<string, SeparationTable>();
+const KEPT_TABLES = 16;
+
+/**
+ * The table of a law, built once and kept.
+ *
+ * @throws RangeError for parameters outside their domain
+ * Accuracy: 5e-6 in F, except within 5e-4 of ρ = 1 for e = 0 (use the closed form there).
+ * Cost: 20 ms for one eccentricity, 100 ms for a law that spreads.
+ */
+export function separationTable(law: EccentricityLaw): SeparationTable {
+  const key = JSON.stringify(Object.entries(law).sort());
+  const known = tables.get(key);
+  if (known) return known;
+  const table = buildTable(law);
+  if (tables.size >= KEPT_TABLES) tables.delete(tables.keys().next().value as string);
+  tables.set(key, table);
+  return table;
+}
+
+function buildTable(law: EccentricityLaw): SeparationTable {
+  const step = (Math.log(largestSeparation(law)) - START) / INTERVALS;
+  const cumulative = new Float64Array(INTERVALS + 1);
+  const valueAt = (i: number) => separationCumulative(Math.exp(START + i * step), law);
+  if (singleEccentricity(law) !== null) {
+    for (let i = 0; i < INTERVALS; i++) cumulative[i] = valueAt(i);
+  } else {
+    for (let i = 0; i < INTERVALS; i += COARSE_INTERVAL) cumulative[i] = valueAt(i);
+  }
+  cumulative[0] = 0;
+  cumulative[INTERVALS] = 1;
+  if (singleEccentricity(law) === null) {
+    for (let i = 0; i < INTERVALS; i += COARSE_INTERVAL) {
+      sampleBetween(cumulative, i, i + COARSE_INTERVAL, valueAt);
+    }
+  }
+  return { start: START, step, cumulative, ...antiderivatives(cumulative, step) };
+}
+
+/** Fills the nodes between two known ones, by straight lines once those are good enough. */
+function sampleBetween(
+  values: Float64Array,
+  from: number,
+  to: number,
+  valueAt: (i: number) => number,
+): void {
+  if (to - from < 2) return;
+  const middle = (from + to) >> 1;
+  const straight = 0.5 * (values[from] + values[to]);
+  values[middle] = valueAt(middle);
+  if (Math.abs(values[middle] - straight) > SAMPLING_TOLERANCE) {
+    sampleBetween(values, from, middle, valueAt);
+    sampleBetween(values, middle, to, valueAt);
+    return;
+  }
+  for (const [low, high] of [
+    [from, middle],
+    [middle, to],
+  ]) {
+    const slope = (values[high] - values[low]) / (high - low);
+    for (let i = low + 1; i < high; i++) values[i] = values[low] + slope * (i - low);
+  }
+}
+
+function antiderivatives(values: Float64Array, step: number) {
+  const first = new Float64Array(values.length);
+  const second = new Float64Array(values.length);
+  for (let i = 0; i + 1 < values.length; i++) {
+    const rise = values[i + 1] - values[i];
+    first[i + 1] = first[i] + step * (values[i] + 0.5 * rise);
+    second[i + 1] = second[i] + step * (first[i] + step * (0.5 * values[i] + rise / 6));
+  }
+  return { first, second };
+}

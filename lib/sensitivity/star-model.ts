@@ -1,0 +1,123 @@
+import { distanceModulus } from '@/lib/quantities/magnitudes';
+import { ageNodes, type WeightedNodes } from './age';
+import { checkContrastCurve } from './contrast';
+import { coolNodes } from './cooling';
+import { distanceNodes } from './distance';
+import type {
+  ContrastCurve,
+  CoolingRelation,
+  CoolingReport,
+  SensitivitySettings,
+  StarInputs,
+} from './types';
+
+/** One curve of a star with everything that does not depend on age or distance worked out. */
+export interface PreparedCurve {
+  /** ln θ, shape [point], [ln arcsec]. */
+  logSeparation: Float64Array;
+  /** Faintest apparent magnitude that is found, corrected for extinction, [mag]. */
+  limitMag: Float64Array;
+  coverage: Float64Array;
+  nSigma: number;
+  /** Absolute magnitudes in the curve's band, shape [mass, age]; Infinity is never detected. */
+  magnitudes: Float64Array;
+}
+
+/** A star ready for integration: nodes of age and distance, curves, and magnitudes at the nodes. */
+export interface PreparedStar {
+  ages: WeightedNodes;
+  distances: WeightedNodes;
+  /** ln d and μ at each distance node. */
+  logDistance: Float64Array;
+  modulus: Float64Array;
+  curves: PreparedCurve[];
+  report: CoolingReport;
+}
+
+/**
+ * Checks a star's inputs and evaluates its cooling relation.
+ *
+ * @param star see StarInputs
+ * @param cooling relation
+ * @param massMjup mass nodes, [M_Jup], not modified
+ * @param settings rules
+ * @throws RangeError for anything outside its domain, naming the star and the field
+ */
+export function prepareStar(
+  star: StarInputs,
+  cooling: CoolingRelation,
+  massMjup: Float64Array,
+  settings: SensitivitySettings,
+): PreparedStar {
+  const hostMags = apparentMags(star);
+  const ages = ageNodes(star.age, settings.threshold);
+  const distances = distanceNodes(star.distance);
+  const extinctionMag = star.extinctionMag ?? 0;
+  if (!Number.isFinite(extinctionMag)) {
+    throw new RangeError(`extinctionMag of ${star.name} must be finite, got ${extinctionMag}`);
+  }
+  const reports: CoolingReport[] = [];
+  const curves = star.curves.map((curve, s) => {
+    checkContrastCurve(curve, star.name);
+    const cooled = coolNodes(cooling, curve.band, massMjup, ages.values, settings, star.name);
+    reports.push(cooled.report);
+    return prepareCurve(curve, hostMags[s] - extinctionMag, cooled.magnitudes);
+  });
+  return {
+    ages,
+    distances,
+    logDistance: distances.values.map(Math.log),
+    modulus: distances.values.map(distanceModulus),
+    curves,
+    report: mergeReports(reports),
+  };
+}
+
+/** Apparent magnitude of the star for each curve; differing bands need one each. */
+function apparentMags(star: StarInputs): number[] {
+  if (star.curves.length === 0) throw new RangeError(`${star.name} must have a curve, got none`);
+  const mags = star.hostMags ?? star.curves.map(() => star.hostMag);
+  if (mags.length !== star.curves.length) {
+    throw new RangeError(
+      `hostMags of ${star.name} must have one value per curve, got ${mags.length} for ${star.curves.length}`,
+    );
+  }
+  const bands = new Set(star.curves.map((curve) => curve.band));
+  if (star.hostMags === undefined && bands.size > 1) {
+    throw new RangeError(
+      `hostMags of ${star.name} must be given for curves in ${[...bands].join(' and ')}, got one magnitude`,
+    );
+  }
+  for (const mag of mags) {
+    if (!Number.isFinite(mag)) {
+      throw new RangeError(`hostMag of ${star.name} must be finite, got ${mag}`);
+    }
+  }
+  return mags;
+}
+
+function prepareCurve(
+  curve: ContrastCurve,
+  hostMag: number,
+  magnitudes: Float64Array,
+): PreparedCurve {
+  return {
+    logSeparation: curve.separationArcsec.map(Math.log),
+    limitMag: curve.contrastMag.map((contrast) => hostMag + contrast),
+    coverage: curve.coverage ?? new Float64Array(curve.contrastMag.length).fill(1),
+    nSigma: curve.nSigma,
+    magnitudes,
+  };
+}
+
+/** Several bands of one star: a mass node counts once, an age node once. */
+function mergeReports(reports: CoolingReport[]): CoolingReport {
+  const flagged = new Set(reports.flatMap((report) => report.flaggedMassNodes));
+  const largest = (pick: (report: CoolingReport) => number) => Math.max(...reports.map(pick));
+  return {
+    massNodesOutside: largest((report) => report.massNodesOutside) && flagged.size,
+    ageNodesClamped: largest((report) => report.ageNodesClamped),
+    lawNodesOutsideValidity: largest((report) => report.lawNodesOutsideValidity),
+    flaggedMassNodes: [...flagged].sort((a, b) => a - b),
+  };
+}
