@@ -25,7 +25,7 @@ export function TopBar({ brandHref, switcher, nav, tools }: TopBarProps) {
     <header className="print:hidden">
       {/* biome-ignore lint/a11y/noStaticElementInteractions: Escape closes the open navigation from anywhere in the bar */}
       <div
-        className="relative mx-auto flex min-h-[52px] max-w-[1440px] flex-wrap items-center gap-x-2 px-[22px] md:gap-x-4 lg:min-h-[58px] lg:flex-nowrap lg:px-10 xl:gap-x-[22px]"
+        className="relative mx-auto flex min-h-[52px] py-1 lg:py-0 max-w-[1440px] flex-wrap items-center gap-x-2 px-[22px] md:gap-x-4 lg:min-h-[58px] lg:flex-nowrap lg:px-10 xl:gap-x-[22px]"
         onKeyDown={(event) => {
           if (event.key === 'Escape') setOpen(false);
         }}

@@ -1,0 +1,26 @@
+import type { ReactNode } from 'react';
+import { Mark, Wordmark } from '@/components/ui/brand';
+import { SkipLink } from '@/components/ui/skip-link';
+import type { Theme } from '@/components/ui/theme';
+import { ThemeSwitch } from '@/components/ui/theme-switch';
+import { SampleGrowthArt } from './sample-growth-art';
+
+/** The two halves of every page before the laboratory: a form, and what the product is about. */
+export function Entrance({ theme, children }: { theme: Theme; children: ReactNode }) {
+  return (
+    <div className="grid min-h-dvh lg:grid-cols-[minmax(0,4fr)_minmax(0,5fr)]">
+      <SkipLink />
+      <div className="flex flex-col px-[22px] pt-8 pb-8 md:px-14 lg:px-24 lg:pt-16">
+        <div className="flex items-center gap-3">
+          <Mark />
+          <Wordmark />
+        </div>
+        <main id="main" className="flex w-full max-w-[400px] flex-1 flex-col justify-center py-10">
+          {children}
+        </main>
+        <ThemeSwitch initial={theme} />
+      </div>
+      <SampleGrowthArt />
+    </div>
+  );
+}

@@ -1,0 +1,92 @@
+'use client';
+
+import { type KeyboardEvent, type ReactNode, useRef, useState } from 'react';
+
+interface EditableRangeProps {
+  /** "planet mass", for readers. */
+  name: string;
+  unit: string;
+  min: number;
+  max: number;
+  /** Ends that make sense at all. */
+  bounds: [number, number];
+  /** How it reads while nobody edits it. */
+  children: ReactNode;
+  onChange(min: number, max: number): void;
+}
+
+/** A range inside a sentence: a press turns it into two fields; Enter takes them, Escape leaves. */
+export function EditableRange(props: EditableRangeProps) {
+  const { name, unit, min, max, bounds, children, onChange } = props;
+  const [isOpen, setOpen] = useState(false);
+  const [fault, setFault] = useState<string>();
+  const fields = useRef<HTMLSpanElement>(null);
+  const button = useRef<HTMLButtonElement>(null);
+
+  const close = () => {
+    setOpen(false);
+    setFault(undefined);
+    requestAnimationFrame(() => button.current?.focus());
+  };
+  const take = () => {
+    const [low, high] = [...(fields.current?.querySelectorAll('input') ?? [])].map((input) =>
+      Number(input.value),
+    );
+    if (low === min && high === max) return close();
+    if (!(low > 0 && high > low)) return setFault('The first end must be positive and below the second.');
+    if (low < bounds[0] || high > bounds[1]) {
+      return setFault(`Both ends must lie within ${bounds[0]} to ${bounds[1]} ${unit}.`);
+    }
+    onChange(low, high);
+    close();
+  };
+  const press = (event: KeyboardEvent) => {
+    if (event.key === 'Enter') take();
+    if (event.key === 'Escape') close();
+  };
+
+  if (!isOpen) {
+    return (
+      <button
+        ref={button}
+        type="button"
+        className="editable text-left"
+        aria-label={`${name}, ${min} to ${max} ${unit}: change`}
+        onClick={() => setOpen(true)}
+      >
+        {children}
+      </button>
+    );
+  }
+  const look =
+    'w-[4.2em] border-ink3 border-b-[1.5px] border-dashed bg-transparent px-0.5 text-center font-semibold text-ink';
+  return (
+    <span ref={fields} className="whitespace-nowrap" onKeyDown={press} role="group" aria-label={name}>
+      <input
+        className={look}
+        type="number"
+        step="any"
+        defaultValue={min}
+        aria-label={`${name}, lower end, ${unit}`}
+        // biome-ignore lint/a11y/noAutofocus: the field takes the place of the button that was just pressed
+        autoFocus
+      />
+      {' – '}
+      <input
+        className={look}
+        type="number"
+        step="any"
+        defaultValue={max}
+        aria-label={`${name}, upper end, ${unit}`}
+        onBlur={(event) => {
+          if (!fields.current?.contains(event.relatedTarget)) take();
+        }}
+      />
+      {fault !== undefined && (
+        <span role="alert" className="block whitespace-normal font-normal text-note text-ink2">
+          {fault}
+        </span>
+      )}
+    </span>
+  );
+}

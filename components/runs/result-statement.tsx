@@ -1,0 +1,151 @@
+import type { ReactNode } from 'react';
+import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
+import { Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
+import { describeLevel, describePrior, type RateQuantity } from '@/lib/inference';
+import { formatPercent, formatRate, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
+import { EditableRange } from './editable-range';
+import type { LimitAnswer } from './live-answer';
+import type { LiveSetting } from './live-setting';
+
+interface ResultStatementProps {
+  setting: LiveSetting;
+  quantity: RateQuantity;
+  answer: LimitAnswer;
+  /** Number for which the statement holds no longer: it follows a control. */
+  isLive: boolean;
+  /** Ends of the maps. */
+  bounds: { mass: [number, number]; axis: [number, number] };
+  conditions: { name: string; value: ReactNode }[];
+  /** Read out when the number has been still for a while. */
+  announced: string;
+  onDefinition(definition: PopulationDefinition): void;
+}
+
+/** The sentence that a result is read as, with everything that it rests on below. */
+export function ResultStatement(props: ResultStatementProps) {
+  const { setting, quantity, answer, isLive, conditions, announced } = props;
+  const isFraction = quantity === 'host_fraction';
+  return (
+    <div className="min-w-0">
+      <p className="text-body text-ink3">
+        <span className="mr-[9px]">1</span>
+        {answer.isConstrained
+          ? `Upper limit, ${describeLevel(setting.credibleLevel)} credible level`
+          : 'No limit'}
+        {isLive && <LiveMark />}
+      </p>
+      {answer.isConstrained && (
+        <StatementNumber
+          value={formatSignificant(100 * answer.limit, 2)}
+          unit={isFraction ? `${THIN_SPACE}%` : undefined}
+        />
+      )}
+      <p className="statement mb-5" aria-live="off">
+        {lead(answer.isConstrained, isFraction)} <Ranges {...props} />
+        {answer.isConstrained && !isFraction && ' per 100 stars'}
+      </p>
+      <p className="sr-only" aria-live="polite">
+        {announced}
+      </p>
+      <Conditions rows={conditions} />
+    </div>
+  );
+}
+
+function lead(isConstrained: boolean, isFraction: boolean): string {
+  if (!isConstrained) return 'These data do not constrain planets of';
+  return isFraction ? 'of stars host at least one planet of' : 'planets of';
+}
+
+function Ranges({ setting, bounds, onDefinition }: ResultStatementProps) {
+  const { definition } = setting;
+  return (
+    <>
+      <EditableRange
+        name="planet mass"
+        unit="Jupiter masses"
+        min={definition.massMinMjup}
+        max={definition.massMaxMjup}
+        bounds={bounds.mass}
+        onChange={(massMinMjup, massMaxMjup) =>
+          onDefinition({ ...definition, massMinMjup, massMaxMjup })
+        }
+      >
+        <MassRange definition={definition} />
+      </EditableRange>
+      {' at '}
+      <EditableRange
+        name="semi-major axis"
+        unit="AU"
+        min={definition.semiMajorAxisMinAu}
+        max={definition.semiMajorAxisMaxAu}
+        bounds={bounds.axis}
+        onChange={(semiMajorAxisMinAu, semiMajorAxisMaxAu) =>
+          onDefinition({ ...definition, semiMajorAxisMinAu, semiMajorAxisMaxAu })
+        }
+      >
+        <AxisRange definition={definition} />
+      </EditableRange>
+    </>
+  );
+}
+
+interface ConditionInputs {
+  setting: LiveSetting;
+  quantity: RateQuantity;
+  stars: number;
+  counted: string[];
+  outside: string[];
+  merged: string[];
+  cooling: string;
+  shareOutsideMaps: number;
+  answer: LimitAnswer;
+  atTenthOfFloor: number | null;
+}
+
+/** Name and value, line by line, from the setting and never from a stored text. */
+export function conditionRows(inputs: ConditionInputs): { name: string; value: ReactNode }[] {
+  const { setting, quantity, stars, answer, atTenthOfFloor, shareOutsideMaps } = inputs;
+  const rows: { name: string; value: ReactNode }[] = [
+    { name: 'Prior', value: describePrior(setting.prior, quantity) },
+    { name: 'Population', value: <PowerLaws definition={setting.definition} /> },
+    {
+      name: 'Likelihood',
+      value:
+        quantity === 'host_fraction'
+          ? `host fraction, binomial over ${stars} stars`
+          : `mean number of planets, Poisson over ${stars} stars`,
+    },
+    { name: 'Detections', value: detectionWords(inputs) },
+    { name: 'Cooling', value: inputs.cooling },
+  ];
+  if (shareOutsideMaps > 0.0005) {
+    rows.push({
+      name: 'Outside',
+      value: `${formatPercent(shareOutsideMaps)} of the population lies beyond the maps and counts as never seen`,
+    });
+  }
+  if (atTenthOfFloor !== null) {
+    rows.push({
+      name: 'Floor',
+      value: `at a tenth of it the limit would be <${formatRate(atTenthOfFloor, quantity)}`,
+    });
+  }
+  if (answer.isConstrained && answer.isSetByPrior) {
+    rows.push({ name: 'Note', value: 'the limit is set by the prior, not by the data' });
+  }
+  return rows;
+}
+
+function detectionWords({ setting, counted, outside, merged }: ConditionInputs): string {
+  const parts = [];
+  if (setting.detections === 'none') parts.push('none counted: set aside');
+  else if (counted.length === 0) parts.push('none inside the ranges');
+  else {
+    parts.push(`${counted.length} vetted, inside the ranges: ${counted.join(', ')}`);
+  }
+  if (merged.length > 0) parts.push(`${merged.join(', ')} shares its star and counts once`);
+  if (outside.length > 0) parts.push(`${outside.length} outside`);
+  return parts.join('; ');
+}
