@@ -44,6 +44,7 @@ export function readCurves(reading: TableReading, context: ReadContext): CurveRe
   tellDefaults(reading);
   // The band is asked for last: where something else is wrong, the file is wrong, not incomplete.
   if (reading.faults.count === 0 && !band.isKnown) band.reportMissing();
+  if (!reading.isComplete) return [];
   return [...groups.values()]
     .filter(([first]) => !broken.has(first.target))
     .flatMap((points) => buildCurve(reading, points) ?? []);

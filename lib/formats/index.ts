@@ -1,6 +1,16 @@
 export { addFormulaGuard } from './formula-guard';
 export * from './kinds';
+export {
+  escapeLatex,
+  type LatexCell,
+  type LatexStyle,
+  type LatexTable,
+  latexMeasurement,
+  writeLatexTable,
+} from './latex';
 export { uploadLimits } from './limits';
 export { foldName } from './names';
 export { readCompanionSamples, readUpload, type SamplesResult } from './read-upload';
 export { placeOf } from './reports';
+export { type CsvCell, type CsvColumn, writeCsv } from './write-csv';
+export { type WrittenTarget, writeTargets } from './write-targets';

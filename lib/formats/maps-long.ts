@@ -55,6 +55,7 @@ export function readLongMaps(reading: TableReading, context: ReadContext): MapRe
   }
   values.finish();
   refuseTooManyTargets(reading, byTarget.size);
+  if (!reading.isComplete) return [];
   return [...byTarget.values()]
     .filter(({ target }) => !broken.has(target))
     .flatMap((points) => fillGrid(reading, points) ?? []);

@@ -32,6 +32,7 @@ export class WideMapReading {
   ) {}
 
   read(): MapRecord[] {
+    const isComplete = this.faults.count === 0;
     const target = this.readTarget();
     const corner = this.readCorner();
     if (corner === null) return [];
@@ -50,7 +51,7 @@ export class WideMapReading {
       corner.mass,
     );
     const shape = mapShapeFault(this.table.rowCount, this.table.columns.length - 1);
-    if (shape !== null) this.faults.add(shape);
+    if (shape !== null && isComplete) this.faults.add(shape);
     const completeness = this.readValues();
     if (target === null || this.faults.count > 0) return [];
     return [{ target, massMjup, semiMajorAxisAu, completeness, nodeKind: 'nodes' }];

@@ -51,12 +51,17 @@ function describeRule(rule: NumberRule, unit: string): string {
 
 /** A bound table with its reports: every cell is asked for by our column name and its row. */
 export class TableReading {
+  /** False where the container dropped rows, so that a gap says nothing about the file. */
+  readonly isComplete: boolean;
+
   constructor(
     readonly table: RawTable,
     private readonly columns: ReadonlyMap<string, BoundColumn>,
     readonly faults: FaultReport,
     readonly notes: NoteReport,
-  ) {}
+  ) {
+    this.isComplete = faults.count === 0;
+  }
 
   has(name: string): boolean {
     return this.columns.has(name);
