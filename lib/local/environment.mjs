@@ -39,9 +39,9 @@ export function outliveTheTerminal() {
 export async function runCommand(/** @type {() => Promise<number>} */ main) {
   outliveTheTerminal();
   try {
-    process.exitCode = await main();
+    process.exit(await main());
   } catch (error) {
     process.stderr.write(`${error instanceof LauncherProblem ? error.message : error.stack}\n`);
-    process.exitCode = 1;
+    process.exit(1);
   }
 }

@@ -3,15 +3,16 @@ import path from 'node:path';
 import { bundleScripts } from './bundle.mjs';
 import { openCluster } from './cluster-files.mjs';
 import { databaseAddress, ensureRoleAndDatabase } from './cluster-server.mjs';
-import { dataFolder, folderDigest, LauncherProblem, root, runCommand } from './environment.mjs';
+import { dataFolder, folderDigest, root, runCommand } from './environment.mjs';
 import { holdExclusively } from './exclusive.mjs';
 import { ensurePackages } from './packages.mjs';
 import { findFreePort, wantedPort } from './ports.mjs';
-import { endRunning, isAlive, waitUntil } from './process-run.mjs';
+import { isAlive, waitUntil } from './process-run.mjs';
 import { chooseMail, readDemoSignIns, runScript, startProduct } from './product.mjs';
 import { readSecrets } from './secrets.mjs';
 import { killGroup } from './service-process.mjs';
 import { databaseService } from './services.mjs';
+import { stopOnSignals } from './stop-signals.mjs';
 import { Supervisor } from './supervisor.mjs';
 import { buildWeb, isBuildFresh } from './web-build.mjs';
 
@@ -113,31 +114,14 @@ runCommand(async () => {
     say,
     onChange: (processes) => writeFileSync(processesFile, JSON.stringify(processes)),
   });
-  let isUp = false;
-  let firstSignalAt = 0;
-  const stopped = new Promise((resolve) => {
-    const onSignal = async () => {
-      if (firstSignalAt > 0) {
-        // npm passes the terminal's signal on a second time; a person needs longer than that.
-        if (Date.now() - firstSignalAt > 500) supervisor.hurry();
-        return;
-      }
-      firstSignalAt = Date.now();
-      say('\nStopping');
-      endRunning();
-      await supervisor.stop();
-      if (isUp) resolve(0);
-      else process.exit(130);
-    };
-    for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, onSignal);
-  });
+  const stopped = stopOnSignals(supervisor);
   try {
-    announce(await bringUp(supervisor, state));
-    isUp = true;
+    // A signal in the middle of the preparations ends the step that runs; its complaint is no news.
+    await Promise.race([bringUp(supervisor, state).then(announce), stopped]);
   } catch (error) {
-    if (firstSignalAt > 0) return stopped;
+    if (supervisor.isStopping) return stopped;
     await supervisor.stop();
-    throw error instanceof LauncherProblem ? error : new Error('Start failed', { cause: error });
+    throw error;
   }
   return stopped;
 });

@@ -131,6 +131,10 @@ export class Supervisor {
     this.#report();
   }
 
+  get isStopping() {
+    return this.#stopping;
+  }
+
   /** Waits no longer for anybody but the database, which ends by itself within moments. */
   hurry() {
     this.#hurry = true;
