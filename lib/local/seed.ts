@@ -167,7 +167,7 @@ async function seed(): Promise<void> {
       return actor;
     };
     await bringIn(
-      actorOf('castellan'),
+      actorOf('marrand'),
       'cooling-tables',
       'warm-harbour.csv',
       coolingFile(0),
@@ -196,7 +196,7 @@ async function seed(): Promise<void> {
       { settings: { isDemonstrationReady: true } },
       { where: { slug: SLUG } },
     );
-    const { stars: count, entries } = await listSurveys(actorOf('castellan'));
+    const { stars: count, entries } = await listSurveys(actorOf('marrand'));
     say(`${count} stars in ${entries} entries, and the demonstration's analyses, are ready`);
   } finally {
     worker.kill('SIGTERM');

@@ -10,11 +10,11 @@ export interface DemoPerson {
 }
 
 export const demoPeople: DemoPerson[] = [
-  { key: 'castellan', name: 'Rosa Castellan', roles: ['owner'], isShown: true },
-  { key: 'linhart', name: 'Pia Linhart', roles: ['statistician', 'collaborator'], isShown: true },
-  { key: 'marrand', name: 'Ilse Marrand', roles: ['collaborator'], isShown: true },
-  { key: 'vesk', name: 'Tomas Vesk', roles: ['collaborator'], isShown: false },
-  { key: 'orlu', name: 'Amara Orlu', roles: ['author', 'collaborator'], isShown: true },
+  { key: 'marrand', name: 'Ilse Marrand', roles: ['owner', 'collaborator'], isShown: true },
+  { key: 'linhart', name: 'Petra Linhart', roles: ['statistician', 'collaborator'], isShown: true },
+  { key: 'vesk', name: 'Tomo Vesk', roles: ['collaborator'], isShown: true },
+  { key: 'castellan', name: 'Rui Castellan', roles: ['author'], isShown: true },
+  { key: 'orlu', name: 'Ada Orlu', roles: ['collaborator'], isShown: false },
   { key: 'hadley', name: 'Noor Hadley', roles: ['student'], isShown: true },
 ];
 

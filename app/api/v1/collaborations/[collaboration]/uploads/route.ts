@@ -8,7 +8,7 @@ const listQuerySchema = pageSchema.extend({ survey: z.string().optional() });
 
 export const GET = collaborationRoute(
   { scope: 'read', query: listQuerySchema },
-  ({ actor, query }) => listUploads(actor, query.survey, query),
+  async ({ actor, query }) => ({ uploads: await listUploads(actor, query.survey, query) }),
 );
 
 /** The body is the file itself, streamed; nothing is stored of a file that cannot be read. */

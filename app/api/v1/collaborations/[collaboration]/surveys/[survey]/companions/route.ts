@@ -1,6 +1,6 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
 import { listCompanions } from '@/lib/services/targets';
 
-export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
-  listCompanions(actor, params.survey),
-);
+export const GET = collaborationRoute({ scope: 'read' }, async ({ actor, params }) => ({
+  companions: await listCompanions(actor, params.survey),
+}));

@@ -1,0 +1,27 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { TokenPanel } from '@/components/people/token-panel';
+import { PageTitle } from '@/components/ui/page-title';
+import { listTokens } from '@/lib/services/tokens';
+
+export const metadata: Metadata = { title: 'API tokens' };
+
+export default async function TokensPage({
+  params,
+}: {
+  params: Promise<{ collaboration: string }>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const { tokens } = await listTokens(actor);
+  return (
+    <>
+      <PageTitle
+        title="API tokens"
+        context="For scripts: a token reaches this collaboration only, and never does more than you may"
+      />
+      <div className="mt-8">
+        <TokenPanel collaboration={actor.collaboration} initial={tokens} />
+      </div>
+    </>
+  );
+}

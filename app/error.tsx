@@ -1,0 +1,24 @@
+'use client';
+
+import { Button } from '@/components/ui/button';
+
+export default function ErrorPage({
+  error,
+  reset,
+}: {
+  error: Error & { digest?: string };
+  reset(): void;
+}) {
+  return (
+    <main id="main" className="mx-auto max-w-[640px] px-[22px] py-24">
+      <h1 className="font-light text-[34px]">This page could not be made</h1>
+      <p className="mt-3 text-ink2">
+        Nothing was changed. The server&apos;s log has the reason
+        {error.digest ? ` under ${error.digest}` : ''}.
+      </p>
+      <p className="mt-6">
+        <Button onClick={reset}>Try again</Button>
+      </p>
+    </main>
+  );
+}

@@ -1,0 +1,77 @@
+'use client';
+
+import useSWR from 'swr';
+import { z } from 'zod';
+import type { Role } from '@/lib/schemas/common';
+import {
+  type InvitationView,
+  invitationSchema,
+  type MemberView,
+  memberSchema,
+  newTokenSchema,
+  type TokenView,
+  tokenSchema,
+} from '@/lib/schemas/people';
+import { apiPath } from './api-path';
+import { request, requestNothing } from './request';
+
+const membersSchema = z.object({ members: z.array(memberSchema) });
+const invitationsSchema = z.object({ invitations: z.array(invitationSchema) });
+const tokensSchema = z.object({ tokens: z.array(tokenSchema) });
+
+export function useMembers(collaboration: string, fallback: MemberView[]) {
+  return useSWR(
+    apiPath(collaboration, 'members'),
+    async (path) => (await request(path, membersSchema)).members,
+    { fallbackData: fallback },
+  );
+}
+
+export function useInvitations(collaboration: string, fallback: InvitationView[]) {
+  return useSWR(
+    apiPath(collaboration, 'invitations'),
+    async (path) => (await request(path, invitationsSchema)).invitations,
+    { fallbackData: fallback },
+  );
+}
+
+export function useTokens(collaboration: string, fallback: TokenView[]) {
+  return useSWR(
+    apiPath(collaboration, 'tokens'),
+    async (path) => (await request(path, tokensSchema)).tokens,
+    { fallbackData: fallback },
+  );
+}
+
+export function changeRoles(collaboration: string, memberId: string, roles: Role[]) {
+  return request(apiPath(collaboration, 'members', memberId), z.unknown(), {
+    method: 'PATCH',
+    body: { roles },
+  });
+}
+
+export function removeMember(collaboration: string, memberId: string) {
+  return requestNothing(apiPath(collaboration, 'members', memberId), { method: 'DELETE' });
+}
+
+export function invite(collaboration: string, email: string, roles: Role[]) {
+  return request(apiPath(collaboration, 'invitations'), z.unknown(), {
+    method: 'POST',
+    body: { email, roles },
+  });
+}
+
+export function revokeInvitation(collaboration: string, id: string) {
+  return requestNothing(apiPath(collaboration, 'invitations', id), { method: 'DELETE' });
+}
+
+export function createToken(
+  collaboration: string,
+  body: { name: string; scopes: string[]; days: number },
+) {
+  return request(apiPath(collaboration, 'tokens'), newTokenSchema, { method: 'POST', body });
+}
+
+export function revokeToken(collaboration: string, id: string) {
+  return requestNothing(apiPath(collaboration, 'tokens', id), { method: 'DELETE' });
+}

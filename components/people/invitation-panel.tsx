@@ -1,0 +1,127 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { invite, revokeInvitation, useInvitations } from '@/components/hooks/use-people';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { TextAction } from '@/components/ui/text-action';
+import { TextField } from '@/components/ui/text-field';
+import type { Role } from '@/lib/schemas/common';
+import type { InvitationView } from '@/lib/schemas/people';
+import { RoleFields, roleWords } from './role-fields';
+
+interface InvitationPanelProps {
+  collaboration: string;
+  initial: InvitationView[];
+  /** Roles that this person may give; none: the panel only lists. */
+  offered: readonly Role[];
+}
+
+const dayOf = (moment: string) =>
+  new Date(moment).toLocaleDateString('en-GB', { day: 'numeric', month: 'long', timeZone: 'UTC' });
+
+/** Invites by e-mail, and shows what became of earlier invitations. */
+export function InvitationPanel({ collaboration, initial, offered }: InvitationPanelProps) {
+  const { data: invitations = initial, mutate } = useInvitations(collaboration, initial);
+  const [email, setEmail] = useState('');
+  const [roles, setRoles] = useState<Role[]>(['student']);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const [sentTo, setSentTo] = useState<string | null>(null);
+  const [isBusy, setBusy] = useState(false);
+  const attempt = async (work: () => Promise<unknown>, sent: string | null) => {
+    setBusy(true);
+    setRefusal(null);
+    setSentTo(null);
+    try {
+      await work();
+      setSentTo(sent);
+      if (sent !== null) setEmail('');
+      await mutate();
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+    setBusy(false);
+  };
+  return (
+    <div className="flex flex-col gap-6">
+      {offered.length > 0 && (
+        <form
+          className="flex max-w-[440px] flex-col gap-4"
+          onSubmit={(event) => {
+            event.preventDefault();
+            void attempt(() => invite(collaboration, email, roles), email);
+          }}
+        >
+          <TextField
+            label="E-mail of a colleague"
+            type="email"
+            required
+            value={email}
+            onChange={(event) => setEmail(event.target.value)}
+          />
+          <RoleFields legend="Invite as" roles={roles} onChange={setRoles} offered={offered} />
+          <div>
+            <Button
+              type="submit"
+              variant="primary"
+              icon="mail"
+              isBusy={isBusy}
+              disabledReason={roles.length === 0 ? 'Choose at least one role' : undefined}
+            >
+              Invite
+            </Button>
+          </div>
+        </form>
+      )}
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {sentTo !== null && (
+        <Notice tone="ok" title={`An invitation is on its way to ${sentTo}.`} isAnnounced>
+          It holds for 14 days and opens once.
+        </Notice>
+      )}
+      {invitations.length > 0 && (
+        <Table caption="Invitations">
+          <TableHead>
+            <Row>
+              <HeadCell>invited</HeadCell>
+              <HeadCell>as</HeadCell>
+              <HeadCell>by</HeadCell>
+              <HeadCell>state</HeadCell>
+              <HeadCell>
+                <span className="sr-only">take back</span>
+              </HeadCell>
+            </Row>
+          </TableHead>
+          <TableBody>
+            {invitations.map((invitation) => (
+              <Row key={invitation.id}>
+                <Cell>{invitation.email}</Cell>
+                <Cell>{invitation.roles.map((role) => roleWords[role]).join(', ')}</Cell>
+                <Cell>{invitation.invitedBy ?? '–'}</Cell>
+                <Cell>
+                  {invitation.state === 'pending'
+                    ? `open until ${dayOf(invitation.expiresAt)}`
+                    : invitation.state}
+                </Cell>
+                <Cell>
+                  {invitation.state === 'pending' && offered.length > 0 && (
+                    <TextAction
+                      onClick={() =>
+                        void attempt(() => revokeInvitation(collaboration, invitation.id), null)
+                      }
+                    >
+                      Take back
+                      <span className="sr-only"> the invitation of {invitation.email}</span>
+                    </TextAction>
+                  )}
+                </Cell>
+              </Row>
+            ))}
+          </TableBody>
+        </Table>
+      )}
+    </div>
+  );
+}

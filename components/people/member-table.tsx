@@ -1,0 +1,130 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { changeRoles, removeMember, useMembers } from '@/components/hooks/use-people';
+import { Button } from '@/components/ui/button';
+import { Dialog } from '@/components/ui/dialog';
+import { Notice } from '@/components/ui/notice';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { TextAction } from '@/components/ui/text-action';
+import { type Role, roleSchema } from '@/lib/schemas/common';
+import type { MemberView } from '@/lib/schemas/people';
+import { RoleFields, roleWords } from './role-fields';
+
+const dateOf = (moment: string) =>
+  new Date(moment).toLocaleDateString('en-GB', {
+    day: 'numeric',
+    month: 'short',
+    year: 'numeric',
+    timeZone: 'UTC',
+  });
+
+interface RoleDialogProps {
+  collaboration: string;
+  member: MemberView | null;
+  onClose(): void;
+  onChanged(): void;
+}
+
+function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogProps) {
+  const [roles, setRoles] = useState<Role[]>(member?.roles ?? []);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const apply = async (work: () => Promise<unknown>) => {
+    try {
+      await work();
+      onChanged();
+      onClose();
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+  };
+  if (!member) return null;
+  return (
+    <Dialog
+      isOpen
+      onClose={onClose}
+      title={`Roles of ${member.person.name}`}
+      actions={
+        <>
+          <Button
+            variant="primary"
+            disabledReason={roles.length === 0 ? 'At least one role remains' : undefined}
+            onClick={() => void apply(() => changeRoles(collaboration, member.id, roles))}
+          >
+            Save the roles
+          </Button>
+          {member.can.remove && (
+            <Button onClick={() => void apply(() => removeMember(collaboration, member.id))}>
+              Remove from the collaboration
+            </Button>
+          )}
+        </>
+      }
+    >
+      <RoleFields
+        legend="May act as"
+        roles={roles}
+        onChange={setRoles}
+        offered={roleSchema.options}
+      />
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+    </Dialog>
+  );
+}
+
+/** Everybody of the collaboration with their roles and the surveys that they lead. */
+export function MemberTable({
+  collaboration,
+  initial,
+}: {
+  collaboration: string;
+  initial: MemberView[];
+}) {
+  const { data: members = initial, mutate } = useMembers(collaboration, initial);
+  const [chosen, setChosen] = useState<MemberView | null>(null);
+  return (
+    <>
+      <Table caption="People of the collaboration">
+        <TableHead>
+          <Row>
+            <HeadCell>person</HeadCell>
+            <HeadCell>role</HeadCell>
+            <HeadCell>leads</HeadCell>
+            <HeadCell>since</HeadCell>
+            <HeadCell>
+              <span className="sr-only">change</span>
+            </HeadCell>
+          </Row>
+        </TableHead>
+        <TableBody>
+          {members.map((member) => (
+            <Row key={member.id}>
+              <Cell>
+                <span className="font-semibold">{member.person.name}</span>
+                <span className="block text-[13px] text-ink3">{member.person.email}</span>
+              </Cell>
+              <Cell>{member.roles.map((role) => roleWords[role]).join(', ')}</Cell>
+              <Cell>{member.leads.join(', ') || '–'}</Cell>
+              <Cell>{dateOf(member.joinedAt)}</Cell>
+              <Cell>
+                {member.can.changeRoles && (
+                  <TextAction onClick={() => setChosen(member)}>
+                    Change<span className="sr-only"> the roles of {member.person.name}</span>
+                  </TextAction>
+                )}
+              </Cell>
+            </Row>
+          ))}
+        </TableBody>
+      </Table>
+      <RoleDialog
+        key={chosen?.id}
+        collaboration={collaboration}
+        member={chosen}
+        onClose={() => setChosen(null)}
+        onChanged={() => void mutate()}
+      />
+    </>
+  );
+}
