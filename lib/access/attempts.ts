@@ -20,6 +20,7 @@ export const limits = {
   'token-requests': { points: 600, seconds: MINUTE_S },
   'anonymous-requests': { points: 60, seconds: MINUTE_S },
   uploads: { points: 10, seconds: MINUTE_S },
+  'password-changes': { points: 10, seconds: 15 * MINUTE_S },
   invitations: { points: 60, seconds: 60 * MINUTE_S },
 } as const;
 export type LimitName = keyof typeof limits;

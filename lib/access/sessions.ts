@@ -90,15 +90,6 @@ export async function beginSession(
   return rows[0].id;
 }
 
-/** Ends one session of a person. @returns whether there was one */
-export async function endSession(personId: string, sessionId: string): Promise<boolean> {
-  const rows = await database().query(
-    'delete from session where id = $1 and person_id = $2 returning id',
-    { bind: [sessionId, personId], type: QueryTypes.SELECT },
-  );
-  return rows.length > 0;
-}
-
 /** Ends every session of a person, except the one that asks. */
 export async function endSessions(
   personId: string,

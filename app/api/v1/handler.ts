@@ -29,6 +29,10 @@ interface Asked<B, Q> {
 type RouteContext = { params: Promise<Record<string, string>> };
 export type RouteHandler = (request: Request, context: RouteContext) => Promise<Response>;
 
+/** A request without a body needs no content type: its Origin was looked at. */
+const hasBody = ({ headers }: Request) =>
+  headers.has('transfer-encoding') || Number(headers.get('content-length') ?? 0) > 0;
+
 const isWrite = (request: Request) => !['GET', 'HEAD', 'OPTIONS'].includes(request.method);
 
 function finish(response: Response, requestId: string): Response {
@@ -92,8 +96,9 @@ async function admit<B, Q>(
   const person = await knownPerson(request);
   const isCookieWrite = isWrite(request) && person?.via === 'session';
   if (isCookieWrite) requireSameOrigin(request);
-  const hasType = isCookieWrite && request.method !== 'DELETE' && !options.rawBody;
-  if (options.body || hasType) requireJsonType(request);
+  if (options.body || (isCookieWrite && !options.rawBody && hasBody(request))) {
+    requireJsonType(request);
+  }
   if (person?.tokenId) {
     await countAttempt('token-requests', person.tokenId, 'This token sends too many requests.');
   }

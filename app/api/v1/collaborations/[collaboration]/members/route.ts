@@ -1,0 +1,4 @@
+import { collaborationRoute } from '@/app/api/v1/handler';
+import { listMembers } from '@/lib/services/people';
+
+export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => listMembers(actor));

@@ -1,0 +1,250 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import type { Actor } from '@/lib/access/actor';
+import { demand, may } from '@/lib/access/permissions';
+import { NotFound } from '@/lib/errors';
+import { describePopulation } from '@/lib/inference';
+import { type IndexConvention, type Population, toLogIndex } from '@/lib/population';
+import type { CreateVersion } from '@/lib/schemas/population-versions';
+import {
+  type CreatePopulation,
+  type PopulationDefinition,
+  type PopulationView,
+  populationSchema,
+} from '@/lib/schemas/populations';
+import { database, inTransaction, PopulationRow } from '@/models';
+import { digestOf } from '@/models/digest';
+import { recordAudit } from './audit';
+
+const KEY = /^P-([1-9][0-9]{0,8})$/;
+/** Digits kept of a converted index: the convention it was given in must not show in the digest. */
+const INDEX_DIGITS = 12;
+
+function numberOf(key: string): number {
+  const number = KEY.exec(key)?.[1];
+  if (number === undefined) throw new NotFound('population');
+  return Number(number);
+}
+
+/** The definition with its indices per natural logarithm, as it is stored. */
+export function toStored(
+  definition: PopulationDefinition,
+  convention: IndexConvention,
+): PopulationDefinition {
+  const stored = (index: number) =>
+    convention === 'log' ? index : Number(toLogIndex(index, convention).toPrecision(INDEX_DIGITS));
+  return {
+    ...definition,
+    massIndex: stored(definition.massIndex),
+    semiMajorAxisIndex: stored(definition.semiMajorAxisIndex),
+  };
+}
+
+interface Fields {
+  id: string;
+  number: number;
+  version: number;
+  name: string;
+  note: string;
+  definition: Population;
+  digest: string;
+  isShared: boolean;
+  createdBy: string | null;
+  createdAt: Date;
+  beganById: string | null;
+  usedBy: string[];
+  isLatest: boolean;
+}
+
+/** Who made the first version owns the population; once shared it is everybody's. */
+const standing = (actor: Actor, row: Pick<Fields, 'beganById' | 'isShared'>) => ({
+  isOwn: row.beganById === actor.personId && !row.isShared,
+});
+
+function toView(actor: Actor, row: Fields): PopulationView {
+  return populationSchema.parse({
+    id: row.id,
+    key: `P-${row.number}`,
+    number: row.number,
+    version: row.version,
+    name: row.name,
+    note: row.note,
+    definition: row.definition,
+    words: describePopulation(row.definition),
+    digest: row.digest,
+    isShared: row.isShared,
+    createdBy: row.createdBy,
+    createdAt: row.createdAt.toISOString(),
+    usedBy: row.usedBy,
+    can: {
+      saveVersion: row.isLatest && may(actor, 'save-population', standing(actor, row)),
+      share: !row.isShared && may(actor, 'share-population'),
+    },
+  });
+}
+
+async function readPopulations(
+  actor: Actor,
+  number: number | null,
+  transaction?: Transaction,
+): Promise<Fields[]> {
+  return database().query<Fields>(
+    `select p.id, p.number, p.version, p.name, p.note, p.definition, p.digest,
+            p.is_shared as "isShared", w.name as "createdBy", p.created_at as "createdAt",
+            first_value(p.created_by) over versions as "beganById",
+            p.version = max(p.version) over (partition by p.number) as "isLatest",
+            coalesce((select array_agg('A-' || a.number order by a.number) from analysis a
+                       where a.collaboration_id = p.collaboration_id
+                         and a.recipe->>'populationId' = p.id::text), '{}') as "usedBy"
+       from population p left join person w on w.id = p.created_by
+      where p.collaboration_id = $1 and ($2::int is null or p.number = $2)
+     window versions as (partition by p.number order by p.version)
+      order by p.number desc, p.version desc`,
+    { bind: [actor.collaborationId, number], type: QueryTypes.SELECT, transaction },
+  );
+}
+
+/** Every version in the collaboration, newest population and version first. */
+export async function listPopulations(actor: Actor): Promise<{ populations: PopulationView[] }> {
+  demand(actor, 'read');
+  const rows = await readPopulations(actor, null);
+  return { populations: rows.map((row) => toView(actor, row)) };
+}
+
+async function findVersion(
+  actor: Actor,
+  key: string,
+  version: number | undefined,
+  transaction?: Transaction,
+): Promise<Fields> {
+  const rows = await readPopulations(actor, numberOf(key), transaction);
+  const row = version === undefined ? rows[0] : rows.find((one) => one.version === version);
+  if (!row) throw new NotFound('population');
+  return row;
+}
+
+/** The newest version of a population, or the one that is asked for. */
+export async function getPopulation(
+  actor: Actor,
+  key: string,
+  version?: number,
+): Promise<PopulationView> {
+  demand(actor, 'read');
+  return toView(actor, await findVersion(actor, key, version));
+}
+
+/** Numbers are given one after the other: whoever takes one holds the collaboration's row. */
+async function lockNumbers(actor: Actor, transaction: Transaction): Promise<void> {
+  await database().query('select id from collaboration where id = $1 for update', {
+    bind: [actor.collaborationId],
+    transaction,
+  });
+}
+
+interface Insert {
+  number: number;
+  version: number;
+  name: string;
+  note: string;
+  convention: IndexConvention;
+  definition: PopulationDefinition;
+  isShared: boolean;
+}
+
+async function insert(
+  actor: Actor,
+  input: Insert,
+  transaction: Transaction,
+): Promise<PopulationView> {
+  const { number, version, name, note, isShared } = input;
+  const definition = toStored(input.definition, input.convention);
+  const digest = digestOf(definition);
+  const { collaborationId } = actor;
+  const createdBy = actor.personId;
+  await PopulationRow.create(
+    { collaborationId, number, version, name, note, definition, digest, isShared, createdBy },
+    { transaction },
+  );
+  const key = `P-${number}`;
+  const item = { kind: 'population', id: key };
+  const summary = version === 1 ? `saved population ${key}` : `saved version ${version} of ${key}`;
+  await recordAudit(actor, 'save-population', item, summary, transaction, { version, digest });
+  return toView(actor, await findVersion(actor, key, version, transaction));
+}
+
+/** A new population, version 1; with `versionOf`, a new version of that one. */
+export async function createPopulation(
+  actor: Actor,
+  input: CreatePopulation,
+): Promise<PopulationView> {
+  const { versionOf, ...version } = input;
+  if (versionOf !== undefined) return createPopulationVersion(actor, `P-${versionOf}`, version);
+  demand(actor, 'save-population', { isOwn: true });
+  if (input.isShared) demand(actor, 'share-population');
+  return inTransaction(async (transaction) => {
+    await lockNumbers(actor, transaction);
+    const newest = await PopulationRow.max<number | null, PopulationRow>('number', {
+      where: { collaborationId: actor.collaborationId },
+      transaction,
+    });
+    return insert(actor, { ...version, number: (newest ?? 0) + 1, version: 1 }, transaction);
+  });
+}
+
+/** A new version; earlier ones stay as they are, and so does what was made with them. */
+export async function createPopulationVersion(
+  actor: Actor,
+  key: string,
+  input: CreateVersion,
+): Promise<PopulationView> {
+  return inTransaction(async (transaction) => {
+    await lockNumbers(actor, transaction);
+    const before = await findVersion(actor, key, undefined, transaction);
+    demand(actor, 'save-population', standing(actor, before));
+    const isShared = input.isShared ?? before.isShared;
+    if (isShared) demand(actor, 'share-population');
+    const { number, name } = before;
+    return insert(
+      actor,
+      { ...input, name: input.name ?? name, number, version: before.version + 1, isShared },
+      transaction,
+    );
+  });
+}
+
+/** Shares a version with all, or takes it back; its definition stays. */
+export async function sharePopulation(
+  actor: Actor,
+  key: string,
+  version: number | undefined,
+  input: { isShared: boolean },
+): Promise<PopulationView> {
+  return inTransaction(async (transaction) => {
+    const row = await findVersion(actor, key, version, transaction);
+    demand(actor, 'share-population');
+    await PopulationRow.update(
+      { isShared: input.isShared },
+      { where: { id: row.id, collaborationId: actor.collaborationId }, transaction },
+    );
+    const item = { kind: 'population', id: key };
+    const summary = `${input.isShared ? 'shared' : 'no longer shares'} version ${row.version} of ${key}`;
+    await recordAudit(actor, 'share-population', item, summary, transaction);
+    return toView(actor, await findVersion(actor, key, row.version, transaction));
+  });
+}
+
+/**
+ * Populations as analyses name them, by id.
+ *
+ * @returns only those of the actor's collaboration: a foreign id is as absent as an unknown one
+ */
+export async function findPopulationsById(
+  actor: Actor,
+  ids: readonly string[],
+  transaction?: Transaction,
+): Promise<Map<string, PopulationView>> {
+  const wanted = new Set(ids);
+  const rows = await readPopulations(actor, null, transaction);
+  return new Map(
+    rows.filter((row) => wanted.has(row.id)).map((row) => [row.id, toView(actor, row)]),
+  );
+}
