@@ -1,6 +1,6 @@
 'use client';
 
-import { type KeyboardEvent, type ReactNode, useRef, useState } from 'react';
+import { type FocusEvent, type KeyboardEvent, type ReactNode, useRef, useState } from 'react';
 
 interface EditableRangeProps {
   /** "planet mass", for readers. */
@@ -33,12 +33,16 @@ export function EditableRange(props: EditableRangeProps) {
       Number(input.value),
     );
     if (low === min && high === max) return close();
-    if (!(low > 0 && high > low)) return setFault('The first end must be positive and below the second.');
+    if (!(low > 0 && high > low))
+      return setFault('The first end must be positive and below the second.');
     if (low < bounds[0] || high > bounds[1]) {
       return setFault(`Both ends must lie within ${bounds[0]} to ${bounds[1]} ${unit}.`);
     }
     onChange(low, high);
     close();
+  };
+  const leave = (event: FocusEvent) => {
+    if (!fields.current?.contains(event.relatedTarget)) take();
   };
   const press = (event: KeyboardEvent) => {
     if (event.key === 'Enter') take();
@@ -61,13 +65,15 @@ export function EditableRange(props: EditableRangeProps) {
   const look =
     'w-[4.2em] border-ink3 border-b-[1.5px] border-dashed bg-transparent px-0.5 text-center font-semibold text-ink';
   return (
-    <span ref={fields} className="whitespace-nowrap" onKeyDown={press} role="group" aria-label={name}>
+    <span ref={fields} className="whitespace-nowrap">
       <input
         className={look}
         type="number"
         step="any"
         defaultValue={min}
         aria-label={`${name}, lower end, ${unit}`}
+        onKeyDown={press}
+        onBlur={leave}
         // biome-ignore lint/a11y/noAutofocus: the field takes the place of the button that was just pressed
         autoFocus
       />
@@ -78,9 +84,8 @@ export function EditableRange(props: EditableRangeProps) {
         step="any"
         defaultValue={max}
         aria-label={`${name}, upper end, ${unit}`}
-        onBlur={(event) => {
-          if (!fields.current?.contains(event.relatedTarget)) take();
-        }}
+        onKeyDown={press}
+        onBlur={leave}
       />
       {fault !== undefined && (
         <span role="alert" className="block whitespace-normal font-normal text-note text-ink2">

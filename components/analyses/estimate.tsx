@@ -1,0 +1,108 @@
+'use client';
+
+import { useMemo } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useRunMaps } from '@/components/hooks/use-run-maps';
+import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { countOf } from '@/components/runs/level-table';
+import { askedOf, orNull } from '@/components/runs/live-answer';
+import { restrictSample, sampleOf } from '@/components/runs/live-sample';
+import type { LiveSetting } from '@/components/runs/live-setting';
+import { FactsStrip } from '@/components/ui/facts-strip';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { answerFromView, describeLevel, viewPopulation } from '@/lib/inference';
+import { formatLimit, formatSignificant } from '@/lib/quantities/display';
+import type { RunView } from '@/lib/schemas/runs';
+import type { SurveyView } from '@/lib/schemas/surveys';
+import { listNames } from './name-words';
+
+interface EstimateProps {
+  collaboration: string;
+  /** Newest finished run of the collaboration. */
+  run: RunView | null;
+  surveys: SurveyView[];
+  setting?: LiveSetting;
+}
+
+/** What the choices would give, from maps that a run has used already. */
+export function Estimate({ collaboration, run, surveys, setting }: EstimateProps) {
+  const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
+  const inputs = run?.inputs ?? undefined;
+  const ids = surveys.map((survey) => survey.id).join();
+  const estimate = useMemo(() => {
+    if (!maps || !inputs || !setting) return null;
+    const wanted = new Set(ids.split(','));
+    const sample = restrictSample(sampleOf(inputs, maps), (star) =>
+      star.surveys.some((survey) => wanted.has(survey)),
+    );
+    if (sample.stars.length === 0) return null;
+    return orNull(() =>
+      answerFromView(
+        viewPopulation(sample.maps, sample.grid, setting.definition),
+        askedOf(sample, setting),
+      ),
+    );
+  }, [maps, inputs, setting, ids]);
+  const missing = surveys.filter(
+    (survey) => !inputs?.surveys.some((known) => known.id === survey.id),
+  );
+
+  return (
+    <section>
+      <SectionOpener title="Estimate" context="before the first run" />
+      {estimate && setting && estimate.posterior.constrained ? (
+        <>
+          <FactsStrip
+            facts={[
+              {
+                name: `${describeLevel(setting.credibleLevel)}, ${countOf(estimate.counted.length)}`,
+                value: formatLimit(estimate.limit, estimate.posterior.quantity),
+                isBound: true,
+              },
+              {
+                name: 'sum of detection probabilities',
+                value: formatSignificant(estimate.exposure, 3),
+                note: `of ${estimate.stars}`,
+              },
+            ]}
+          />
+          <p className="text-ink2 text-note">
+            About this, for planets of <MassRange definition={setting.definition} /> at{' '}
+            <AxisRange definition={setting.definition} />. From the maps of {run?.analysis.key}, run{' '}
+            {run?.number}
+            {missing.length > 0 &&
+              `; ${listNames(missing.map((survey) => survey.name))} did not take part in it`}
+            . The run itself may differ where maps are newer.
+          </p>
+        </>
+      ) : (
+        <p className="text-ink2 text-note" aria-live="polite">
+          {estimateWords({
+            hasRun: run !== null,
+            isLoading,
+            error: error === undefined ? undefined : sentenceOf(error),
+            isUnconstrained: estimate !== null,
+            hasSurveys: surveys.length > 0,
+          })}
+        </p>
+      )}
+    </section>
+  );
+}
+
+function estimateWords(state: {
+  hasRun: boolean;
+  isLoading: boolean;
+  error: string | undefined;
+  isUnconstrained: boolean;
+  hasSurveys: boolean;
+}): string {
+  if (!state.hasRun) {
+    return 'No run has finished in this collaboration yet, so there are no maps at hand to estimate from. The first run computes the limit itself.';
+  }
+  if (state.error !== undefined) return `No estimate: ${state.error}`;
+  if (state.isLoading) return 'Fetching the maps of the newest run.';
+  if (!state.hasSurveys) return 'Choose a survey to see what it would give.';
+  if (state.isUnconstrained) return 'The stored maps see nothing of this population.';
+  return 'The maps of the newest run give no limit for these choices: they do not cover these stars or this population.';
+}

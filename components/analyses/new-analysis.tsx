@@ -1,0 +1,180 @@
+'use client';
+
+import { useRouter } from 'next/navigation';
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { createAnalysis } from '@/components/hooks/use-analyses';
+import { startRun } from '@/components/hooks/use-runs';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { TextField } from '@/components/ui/text-field';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import { analysisRecipeSchema } from '@/lib/schemas/analyses';
+import type { PopulationView } from '@/lib/schemas/populations';
+import type { RunView } from '@/lib/schemas/runs';
+import type { SurveyList } from '@/lib/schemas/surveys';
+import { DetectionsChoice } from './detections-choice';
+import { Estimate } from './estimate';
+import { suggestName } from './name-words';
+import { PopulationChoice } from './population-choice';
+import { RateChoice } from './rate-choice';
+import { SurveyChoice } from './survey-choice';
+
+interface NewAnalysisProps {
+  collaboration: string;
+  surveys: SurveyList;
+  populations: PopulationView[];
+  /** Newest finished run: its maps give the estimate. */
+  previewRun: RunView | null;
+  /** Population asked for in the address. */
+  wanted?: string;
+}
+
+/** One page, four choices with sensible defaults, and what they would give. */
+export function NewAnalysis(props: NewAnalysisProps) {
+  const { collaboration, surveys, populations, previewRun, wanted } = props;
+  const router = useRouter();
+  const offered = surveys.surveys.filter((survey) => !survey.isArchived);
+  const ready = offered.filter((survey) => survey.maps.ready > 0);
+  const [chosen, setChosen] = useState<string[]>(
+    (ready.length > 0 ? ready : offered).map((survey) => survey.id),
+  );
+  const [populationId, setPopulationId] = useState(
+    (populations.find((population) => population.key === wanted) ?? populations[0])?.id ?? '',
+  );
+  const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
+  const [likelihood, setLikelihood] = useState<AnalysisRecipe['likelihood']>('host-fraction');
+  const [prior, setPrior] = useState<AnalysisRecipe['prior']>({ law: 'uniform', max: 1 });
+  const [credibleLevel, setCredibleLevel] = useState(0.95);
+  const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
+  const [ownName, setOwnName] = useState<string>();
+  const [busy, setBusy] = useState<'create' | 'run'>();
+  const [problem, setProblem] = useState<string>();
+
+  const population = populations.find((candidate) => candidate.id === populationId);
+  const chosenSurveys = offered.filter((survey) => chosen.includes(survey.id));
+  const name = ownName ?? (population ? suggestName(population.definition, chosen.length) : '');
+  const recipe = {
+    surveyIds: chosen,
+    populationId,
+    likelihood,
+    prior,
+    credibleLevel,
+    detections,
+    combination: 'default' as const,
+    zeroOutsideMaps,
+  };
+  const checked = analysisRecipeSchema.safeParse(recipe);
+  const fault = faultWords(checked.success ? undefined : checked.error.issues[0], name);
+
+  const create = async (andRun: boolean) => {
+    if (!checked.success) return;
+    setBusy(andRun ? 'run' : 'create');
+    setProblem(undefined);
+    try {
+      const created = await createAnalysis(collaboration, { name, recipe: checked.data });
+      if (andRun) await startRun(collaboration, created.key);
+      router.push(`/${collaboration}/analyses/${created.key}`);
+    } catch (reason) {
+      setProblem(sentenceOf(reason));
+      setBusy(undefined);
+    }
+  };
+
+  return (
+    <>
+      <PageTitle
+        title="New analysis"
+        crumbs={[{ href: `/${collaboration}/analyses`, label: 'Analyses' }, { label: 'New' }]}
+        context="Four choices; each can be changed later, and each run keeps its own copy of them."
+      />
+      <div className="grid gap-x-14 gap-y-8 xl:grid-cols-[1fr_400px]">
+        <div className="grid min-w-0 gap-8">
+          <SurveyChoice
+            surveys={offered}
+            overlaps={surveys.overlaps}
+            chosen={chosen}
+            onChange={setChosen}
+            address={`/${collaboration}/surveys`}
+          />
+          <PopulationChoice
+            collaboration={collaboration}
+            populations={populations}
+            chosen={populationId}
+            onChange={setPopulationId}
+            grid={previewRun?.inputs?.grid}
+            zeroOutsideMaps={zeroOutsideMaps}
+            onZeroOutsideMaps={setZeroOutsideMaps}
+          />
+          <DetectionsChoice chosen={detections} surveys={chosenSurveys} onChange={setDetections} />
+          <RateChoice
+            likelihood={likelihood}
+            prior={prior}
+            credibleLevel={credibleLevel}
+            onChange={(next) => {
+              setLikelihood(next.likelihood);
+              setPrior(next.prior);
+              setCredibleLevel(next.credibleLevel);
+            }}
+          />
+        </div>
+        <aside className="min-w-0 xl:sticky xl:top-6 xl:self-start">
+          <Estimate
+            collaboration={collaboration}
+            run={previewRun}
+            surveys={chosenSurveys}
+            setting={
+              checked.success && population
+                ? { ...recipe, definition: population.definition }
+                : undefined
+            }
+          />
+          <div className="mt-6 grid gap-4">
+            <TextField
+              label="Name"
+              value={name}
+              maxLength={120}
+              onChange={(event) => setOwnName(event.target.value)}
+            />
+            {problem !== undefined && (
+              <Notice tone="bad" title="It was not created." isAnnounced>
+                {problem}
+              </Notice>
+            )}
+            <div className="flex flex-wrap gap-2">
+              <Button
+                variant="primary"
+                onClick={() => create(true)}
+                isBusy={busy === 'run'}
+                disabledReason={fault}
+              >
+                Create and run
+              </Button>
+              <Button
+                onClick={() => create(false)}
+                isBusy={busy === 'create'}
+                disabledReason={fault}
+              >
+                Create without a run
+              </Button>
+            </div>
+          </div>
+        </aside>
+      </div>
+    </>
+  );
+}
+
+function faultWords(
+  issue: { path: PropertyKey[]; message: string } | undefined,
+  name: string,
+): string | undefined {
+  if (name.trim() === '') return 'Give it a name first.';
+  if (issue === undefined) return undefined;
+  const [field, part] = issue.path;
+  if (field === 'surveyIds') return 'Choose at least one survey.';
+  if (field === 'populationId') return 'Choose a population.';
+  if (field === 'credibleLevel') return 'The level must be more than 0 and less than 100 %.';
+  return `${String(field)}${part === undefined ? '' : `, ${String(part)}`}: ${issue.message}.`;
+}

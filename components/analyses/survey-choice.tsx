@@ -1,0 +1,92 @@
+'use client';
+
+import { seriesColour } from '@/components/charts/series';
+import { CheckboxField } from '@/components/ui/checkbox-field';
+import { EmptyState } from '@/components/ui/empty-state';
+import { LinkButton } from '@/components/ui/link-button';
+import { SectionOpener } from '@/components/ui/section-opener';
+import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
+
+interface SurveyChoiceProps {
+  surveys: SurveyView[];
+  overlaps: SurveyList['overlaps'];
+  chosen: string[];
+  onChange(ids: string[]): void;
+  /** Where surveys are made. */
+  address: string;
+}
+
+export function SurveyChoice({ surveys, overlaps, chosen, onChange, address }: SurveyChoiceProps) {
+  const picked = surveys.filter((survey) => chosen.includes(survey.id));
+  const entries = picked.reduce((sum, survey) => sum + survey.targets, 0);
+  const stars = countStars(overlaps, picked);
+  return (
+    <section>
+      <SectionOpener
+        number={1}
+        title="Surveys"
+        context={picked.length === 0 ? 'none chosen yet' : `${entries} entries, ${stars} stars`}
+      />
+      {surveys.length === 0 ? (
+        <EmptyState
+          title="No survey yet"
+          actions={
+            <LinkButton href={address} variant="primary" icon="add">
+              Add a survey
+            </LinkButton>
+          }
+        >
+          An analysis needs at least one survey whose completeness maps are ready.
+        </EmptyState>
+      ) : (
+        <div className="grid gap-1">
+          {surveys.map((survey) => (
+            <CheckboxField
+              key={survey.id}
+              checked={chosen.includes(survey.id)}
+              onChange={(event) =>
+                onChange(
+                  event.target.checked
+                    ? [...chosen, survey.id]
+                    : chosen.filter((id) => id !== survey.id),
+                )
+              }
+              label={
+                <span className="inline-flex items-center gap-2 font-semibold">
+                  <span
+                    aria-hidden="true"
+                    className="size-[11px]"
+                    style={{ backgroundColor: seriesColour(survey.position) }}
+                  />
+                  {survey.name}
+                </span>
+              }
+              hint={surveyWords(survey)}
+            />
+          ))}
+          <p className="mt-1 text-ink3 text-note">
+            A star in several surveys counts once, with one combined map.
+          </p>
+        </div>
+      )}
+    </section>
+  );
+}
+
+/** Every star once: the overlaps list each set of surveys with the stars that are in just those. */
+export function countStars(overlaps: SurveyList['overlaps'], picked: SurveyView[]): number {
+  const names = new Set(picked.flatMap((survey) => [survey.slug, survey.name, survey.id]));
+  return overlaps
+    .filter((set) => set.surveys.some((survey) => names.has(survey)))
+    .reduce((sum, set) => sum + set.stars, 0);
+}
+
+function surveyWords(survey: SurveyView): string {
+  const { ready, waiting, failed } = survey.maps;
+  const missing = survey.targets - ready;
+  const parts = [`${survey.targets} targets in ${survey.band}`];
+  parts.push(missing === 0 ? 'all maps ready' : `${ready} maps ready`);
+  if (waiting > 0) parts.push(`${waiting} being computed`);
+  if (failed > 0) parts.push(`${failed} failed`);
+  return parts.join(', ');
+}

@@ -1,0 +1,125 @@
+'use client';
+
+import useSWR from 'swr';
+import { z } from 'zod';
+import { type JobView, jobSchema } from '@/lib/schemas/jobs';
+import { type MapView, mapViewSchema } from '@/lib/schemas/sensitivity';
+import {
+  type CompanionView,
+  companionSchema,
+  coolingTableSchema,
+  type createSurveySchema,
+  type SurveyList,
+  type SurveyView,
+  surveyListSchema,
+  surveySchema,
+  type TargetList,
+  type TargetView,
+  targetListSchema,
+  targetSchema,
+  type updateSurveySchema,
+} from '@/lib/schemas/surveys';
+import { apiPath, withQuery } from './api-path';
+import { request } from './request';
+
+const POLL_MS = 1500;
+const isComputing = (survey: SurveyView | undefined) =>
+  survey?.mapJob?.status === 'running' || survey?.mapJob?.status === 'waiting';
+
+export function useSurveys(collaboration: string, fallback: SurveyList) {
+  return useSWR(apiPath(collaboration, 'surveys'), (path) => request(path, surveyListSchema), {
+    fallbackData: fallback,
+    refreshInterval: (list) => (list?.surveys.some(isComputing) ? POLL_MS : 0),
+  });
+}
+
+/** One survey; asked for more often while its maps are being computed. */
+export function useSurvey(collaboration: string, slug: string, fallback: SurveyView) {
+  return useSWR(apiPath(collaboration, 'surveys', slug), (path) => request(path, surveySchema), {
+    fallbackData: fallback,
+    refreshInterval: (survey) => (isComputing(survey) ? POLL_MS : 0),
+  });
+}
+
+/** Every target of a survey, page after page; refreshed while maps arrive. */
+export function useTargets(
+  collaboration: string,
+  slug: string,
+  fallback: TargetList,
+  isLive: boolean,
+) {
+  const path = apiPath(collaboration, 'surveys', slug, 'targets');
+  return useSWR(
+    path,
+    async () => {
+      const targets: TargetView[] = [];
+      for (;;) {
+        const page = await request(
+          withQuery(path, { limit: 500, offset: targets.length }),
+          targetListSchema,
+        );
+        targets.push(...page.targets);
+        if (page.targets.length === 0 || targets.length >= page.total) {
+          return { targets, total: page.total };
+        }
+      }
+    },
+    { fallbackData: fallback, refreshInterval: isLive ? 2 * POLL_MS : 0, revalidateOnFocus: false },
+  );
+}
+
+export function useCompanions(collaboration: string, slug: string, fallback: CompanionView[]) {
+  return useSWR(
+    apiPath(collaboration, 'surveys', slug, 'companions'),
+    async (path) =>
+      (await request(path, z.object({ companions: z.array(companionSchema) }))).companions,
+    { fallbackData: fallback, revalidateOnFocus: false },
+  );
+}
+
+/** One stored map; a map never changes. */
+export function useMap(collaboration: string, id: string | null) {
+  return useSWR<MapView>(
+    id === null ? null : apiPath(collaboration, 'maps', id),
+    (path: string) => request(path, mapViewSchema),
+    { revalidateOnFocus: false, revalidateIfStale: false },
+  );
+}
+
+export function useCoolingTables(collaboration: string) {
+  return useSWR(
+    apiPath(collaboration, 'cooling-tables'),
+    async (path) =>
+      (await request(path, z.object({ coolingTables: z.array(coolingTableSchema) }))).coolingTables,
+  );
+}
+
+export function createSurvey(
+  collaboration: string,
+  body: z.input<typeof createSurveySchema>,
+): Promise<SurveyView> {
+  return request(apiPath(collaboration, 'surveys'), surveySchema, { method: 'POST', body });
+}
+
+export function updateSurvey(
+  collaboration: string,
+  slug: string,
+  body: z.input<typeof updateSurveySchema>,
+): Promise<SurveyView> {
+  return request(apiPath(collaboration, 'surveys', slug), surveySchema, { method: 'PATCH', body });
+}
+
+export function startMaps(collaboration: string, slug: string): Promise<JobView> {
+  return request(apiPath(collaboration, 'surveys', slug, 'maps'), jobSchema, { method: 'POST' });
+}
+
+export function leaveTargetOut(
+  collaboration: string,
+  id: string,
+  leftOutReason: string | null,
+): Promise<TargetView> {
+  return request(apiPath(collaboration, 'targets', id), targetSchema, {
+    method: 'PATCH',
+    body: { leftOutReason },
+  });
+}
