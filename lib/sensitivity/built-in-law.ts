@@ -60,6 +60,10 @@ const GM_SUN_CGS = GM_SUN.value * CM_PER_M ** 3;
 const SUN_PER_JUPITER = GM_JUPITER.value / GM_SUN.value;
 const TEN_PARSECS_M = 10 * PARSEC.value;
 const SQUARE_METRES_UM = 1e-6;
+/** The law's reference age and its powers: T ∝ t^-0.32, R ∝ T^(0.11/0.64) at one mass. */
+const REFERENCE_AGE_MYR = 1000;
+const AGE_POWER = 0.32;
+const RADIUS_POWER = 0.11 / 0.64;
 
 /** What the law says of one companion at one age. */
 export interface CooledBody {
@@ -87,7 +91,7 @@ export interface CooledBody {
 export function cooledBody(massMjup: number, ageMyr: number): CooledBody {
   requireLawRange(massMjup, ageMyr);
   const massMsun = massMjup * SUN_PER_JUPITER;
-  const teffK = 1550 * (1000 / ageMyr) ** 0.32 * (massMsun / 0.05) ** 0.83;
+  const teffK = 1550 * (REFERENCE_AGE_MYR / ageMyr) ** AGE_POWER * (massMsun / 0.05) ** 0.83;
   const gravity = (1e5 / (GM_SUN_CGS * massMsun)) ** 0.18;
   const radiusM = (6.7e9 * gravity * (teffK / 1000) ** 0.11) ** (1 / 0.64) / CM_PER_M;
   const luminosityW = 4 * Math.PI * radiusM ** 2 * STEFAN_BOLTZMANN.value * teffK ** 4;
@@ -112,11 +116,19 @@ export function cooledBody(massMjup: number, ageMyr: number): CooledBody {
 export function planckRadiance(wavelengthUm: number, temperatureK: number): number {
   if (!(wavelengthUm > 0)) throw new RangeError(`wavelengthUm must be > 0, got ${wavelengthUm}`);
   if (!(temperatureK > 0)) throw new RangeError(`temperatureK must be > 0, got ${temperatureK}`);
+  const { scale, temperatureK: characteristicK } = planckFactors(wavelengthUm);
+  return scale / Math.expm1(characteristicK / temperatureK);
+}
+
+/** Planck's law at one wavelength is scale / (exp(temperatureK / T) - 1). */
+function planckFactors(wavelengthUm: number): { scale: number; temperatureK: number } {
   const lambda = wavelengthUm * 1e-6;
   const { value: h } = PLANCK_CONSTANT;
   const { value: c } = SPEED_OF_LIGHT;
-  const exponent = (h * c) / (lambda * BOLTZMANN_CONSTANT.value * temperatureK);
-  return ((2 * h * c * c) / lambda ** 5 / Math.expm1(exponent)) * SQUARE_METRES_UM;
+  return {
+    scale: ((2 * h * c * c) / lambda ** 5) * SQUARE_METRES_UM,
+    temperatureK: (h * c) / (lambda * BOLTZMANN_CONSTANT.value),
+  };
 }
 
 /**
@@ -137,12 +149,54 @@ export function builtInMagnitude(massMjup: number, ageMyr: number, band: string)
 }
 
 /**
+ * Magnitudes of many masses at many ages: builtInMagnitude and isInsideLawValidity for a grid.
+ *
+ * Temperature and radius are powers of mass times powers of age, so each is worked out once a mass.
+ *
+ * @param massMjup masses, [M_Jup], not modified
+ * @param agesMyr ages, [Myr], not modified
+ * @param band see builtInMagnitude
+ * @returns magnitudes of shape [mass, age], row-major, and the masses that leave the law's validity
+ *   at one age or more
+ * @throws RangeError outside the law's range, or for an unknown band
+ */
+export function builtInMagnitudes(
+  massMjup: Float64Array,
+  agesMyr: Float64Array,
+  band: string,
+): { magnitudes: Float64Array; outsideValidity: number[] } {
+  const { wavelengthUm, zeroFlux } = requireBand(band);
+  const planck = planckFactors(wavelengthUm);
+  const cooling = agesMyr.map((age) => (REFERENCE_AGE_MYR / age) ** AGE_POWER);
+  const swelling = cooling.map((factor) => factor ** (2 * RADIUS_POWER));
+  const magnitudes = new Float64Array(massMjup.length * agesMyr.length);
+  const outsideValidity: number[] = [];
+  for (const age of agesMyr) requireLawRange(BUILT_IN_LAW_RANGE.massMinMjup, age);
+  for (let i = 0; i < massMjup.length; i++) {
+    const { teffK, radiusM } = cooledBody(massMjup[i], REFERENCE_AGE_MYR);
+    const scale = (Math.PI * planck.scale * (radiusM / TEN_PARSECS_M) ** 2) / zeroFlux;
+    let isValid = true;
+    for (let k = 0; k < agesMyr.length; k++) {
+      const temperature = teffK * cooling[k];
+      const flux = (scale * swelling[k]) / Math.expm1(planck.temperatureK / temperature);
+      magnitudes[i * agesMyr.length + k] = -2.5 * Math.log10(flux);
+      isValid &&= isTrusted(massMjup[i], temperature);
+    }
+    if (!isValid) outsideValidity.push(i);
+  }
+  return { magnitudes, outsideValidity };
+}
+
+/**
  * Whether the law is trusted at this mass and age: m >= 5 M_Jup and 200 K <= T <= 3000 K (our rule).
  *
  * @throws RangeError outside the law's range
  */
 export function isInsideLawValidity(massMjup: number, ageMyr: number): boolean {
-  const { teffK } = cooledBody(massMjup, ageMyr);
+  return isTrusted(massMjup, cooledBody(massMjup, ageMyr).teffK);
+}
+
+function isTrusted(massMjup: number, teffK: number): boolean {
   return massMjup >= VALID_MASS_MIN_MJUP && teffK >= VALID_TEFF_K[0] && teffK <= VALID_TEFF_K[1];
 }
 

@@ -18,8 +18,8 @@ import type {
 export const ENGINE_VERSION: string = '1';
 
 /** Widest cell of limiting magnitude, in units of the smooth threshold's own width (1.09 mag / n). */
-const CELL_SIGMAS = 0.9;
-const WIDEST_CELL_MAG = 0.3;
+const CELL_SIGMAS = 1.3;
+const WIDEST_CELL_MAG = 0.4;
 
 /**
  * Completeness of one star, P(detected | companion of mass m and semi-major axis a), without random

@@ -1,9 +1,4 @@
-import {
-  BUILT_IN_LAW_NAME,
-  BUILT_IN_LAW_RANGE,
-  builtInMagnitude,
-  isInsideLawValidity,
-} from './built-in-law';
+import { BUILT_IN_LAW_NAME, BUILT_IN_LAW_RANGE, builtInMagnitudes } from './built-in-law';
 import { checkCoolingTable, tableLookup } from './cooling-table';
 import type { CoolingRelation, CoolingReport, CoolingTable, SensitivitySettings } from './types';
 
@@ -108,14 +103,8 @@ function lawMagnitudes(
   ages: Float64Array,
   flags: Set<number>,
 ): Float64Array {
-  const magnitudes = new Float64Array(massMjup.length * ages.length);
-  let cell = 0;
-  for (let i = 0; i < massMjup.length; i++) {
-    for (const age of ages) {
-      magnitudes[cell++] = builtInMagnitude(massMjup[i], age, band);
-      if (!isInsideLawValidity(massMjup[i], age)) flags.add(i);
-    }
-  }
+  const { magnitudes, outsideValidity } = builtInMagnitudes(massMjup, ages, band);
+  for (const node of outsideValidity) flags.add(node);
   return magnitudes;
 }
 

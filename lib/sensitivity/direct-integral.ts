@@ -55,7 +55,7 @@ export function directIntegral(
   const intervals = cutIntervals(star.curves, threshold);
   const completeness = new Float64Array(masses * columns);
   for (let l = 0; l < star.modulus.length; l++) {
-    const sum = newRowSum(fill, columns, star.logDistance[l]);
+    const sum = newRowSum(fill, columns, star.logDistance[l], intervals);
     for (let m = 0; m < masses; m++) {
       sum.restart();
       if (threshold === 'hard') addHard(star, intervals, m, star.modulus[l], sum.add);
@@ -210,9 +210,19 @@ function addSmooth(
  * Gathers straight pieces into one factor per place, so that a row is read once however many pieces
  * meet there: ∫ v dF = v_b F_b - v_a F_a - (v_b - v_a)(G_b - G_a)/(b - a), G the antiderivative.
  */
-function newRowSum(fill: FillRow, columns: number, logDistance: number) {
+function newRowSum(
+  fill: FillRow,
+  columns: number,
+  logDistance: number,
+  intervals: readonly Interval[],
+) {
   const rows = new Map<number, SeparationRow>();
-  const spare = newRow(columns);
+  for (const y of new Set(intervals.flatMap(({ fromY, toY }) => [fromY, toY]))) {
+    const row = newRow(columns);
+    fill(y + logDistance, row);
+    rows.set(y, row);
+  }
+  const crossing = newRow(columns);
   const forF = new Map<number, number>();
   const forG = new Map<number, number>();
   const increase = (factors: Map<number, number>, y: number, by: number) => {
@@ -235,10 +245,8 @@ function newRowSum(fill: FillRow, columns: number, logDistance: number) {
   const rowAt = (y: number) => {
     const known = rows.get(y);
     if (known) return known;
-    const row = rows.size < 4096 ? newRow(columns) : spare;
-    fill(y + logDistance, row);
-    if (row !== spare) rows.set(y, row);
-    return row;
+    fill(y + logDistance, crossing);
+    return crossing;
   };
   return {
     add,
@@ -251,8 +259,9 @@ function newRowSum(fill: FillRow, columns: number, logDistance: number) {
         const slope = forG.get(y) ?? 0;
         if (Math.abs(factor) < NEGLIGIBLE && slope === 0) continue;
         const { cumulative, first } = rowAt(y);
+        const [perF, perG] = [weight * factor, weight * slope];
         for (let j = 0; j < columns; j++) {
-          out[start + j] += weight * (factor * cumulative[j] + slope * first[j]);
+          out[start + j] += perF * cumulative[j] + perG * first[j];
         }
       }
     },

@@ -174,20 +174,21 @@ function newPieceAdder(rows: LevelRows, whole: Float64Array, fill: FillRow, colu
       const sign = rises ? 1 : -1;
       const perWidth = weight / width;
       const perMoment = (2 * weight) / (width * width);
+      const { cumulative: aF, first: aG, second: aH } = a;
+      const { cumulative: bF, first: bG, second: bH } = b;
+      const { cumulative: endF, first: endG } = end;
+      const perSpan = isJump ? 0 : 1 / span;
+      const [f, g] = isJump ? [0.5, -0.5 * kappa] : [0, perSpan];
+      const inward = (to - from) * sign;
+      const row = c * columns;
       for (let j = 0; j < columns; j++) {
         const average = isJump
-          ? 0.5 *
-            (cA * a.cumulative[j] - kappa * a.first[j] + cB * b.cumulative[j] - kappa * b.first[j])
-          : (cB * b.first[j] -
-              2 * kappa * b.second[j] -
-              cA * a.first[j] +
-              2 * kappa * a.second[j]) /
-            span;
-        const atEnd = endCoverage * end.cumulative[j] - kappa * end.first[j];
-        const inside = (to - from) * sign * (atEnd - average);
-        const bent = bend * (0.5 * span * (a.first[j] + b.first[j]) - (b.second[j] - a.second[j]));
-        mean[c * columns + j] += perWidth * (inside + below * all[j]);
-        moment[c * columns + j] += perMoment * (belowMoment * all[j] + offset * inside + bent);
+          ? f * (cA * aF[j] + cB * bF[j]) + g * (aG[j] + bG[j])
+          : g * (cB * bG[j] - cA * aG[j] - 2 * kappa * (bH[j] - aH[j]));
+        const inside = inward * (endCoverage * endF[j] - kappa * endG[j] - average);
+        const bent = bend * (0.5 * span * (aG[j] + bG[j]) - (bH[j] - aH[j]));
+        mean[row + j] += perWidth * (inside + below * all[j]);
+        moment[row + j] += perMoment * (belowMoment * all[j] + offset * inside + bent);
       }
     }
   };

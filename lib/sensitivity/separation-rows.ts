@@ -3,6 +3,8 @@ import { circularSeparationCumulative } from './orbits';
 import { separationTable } from './separation-table';
 import type { EccentricityLaw } from './types';
 
+const SIXTH = 1 / 6;
+
 /** F and its antiderivatives at one projected separation, for every semi-major axis of a grid. */
 export interface SeparationRow {
   /** P(projected separation < s | a), shape [semiMajorAxis]. */
@@ -35,26 +37,31 @@ export function tabulatedRows(law: EccentricityLaw, logAxis: Float64Array): Fill
   const { start, step, cumulative, first, second } = separationTable(law);
   const last = cumulative.length - 1;
   const perStep = 1 / step;
+  const [firstEnd, secondEnd] = [first[last], second[last]];
+  const columns = logAxis.length;
   return (logSeparationAu, row) => {
-    for (let j = 0; j < logAxis.length; j++) {
-      const place = (logSeparationAu - logAxis[j] - start) * perStep;
+    const { cumulative: rowF, first: rowG, second: rowH } = row;
+    const shift = logSeparationAu - start;
+    for (let j = 0; j < columns; j++) {
+      const place = (shift - logAxis[j]) * perStep;
       if (place <= 0) {
-        row.cumulative[j] = 0;
-        row.first[j] = 0;
-        row.second[j] = 0;
+        rowF[j] = 0;
+        rowG[j] = 0;
+        rowH[j] = 0;
       } else if (place >= last) {
         const beyond = (place - last) * step;
-        row.cumulative[j] = 1;
-        row.first[j] = first[last] + beyond;
-        row.second[j] = second[last] + beyond * (first[last] + 0.5 * beyond);
+        rowF[j] = 1;
+        rowG[j] = firstEnd + beyond;
+        rowH[j] = secondEnd + beyond * (firstEnd + 0.5 * beyond);
       } else {
         const i = place | 0;
         const t = (place - i) * step;
         const value = cumulative[i];
-        const rise = (cumulative[i + 1] - value) * perStep * t;
-        row.cumulative[j] = value + rise;
-        row.first[j] = first[i] + t * (value + 0.5 * rise);
-        row.second[j] = second[i] + t * (first[i] + t * (0.5 * value + rise / 6));
+        const rise = (cumulative[i + 1] - value) * (place - i);
+        const area = first[i];
+        rowF[j] = value + rise;
+        rowG[j] = area + t * (value + 0.5 * rise);
+        rowH[j] = second[i] + t * (area + t * (0.5 * value + rise * SIXTH));
       }
     }
   };
