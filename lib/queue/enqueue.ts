@@ -1,0 +1,98 @@
+import type { Transaction } from 'sequelize';
+import { JobRow } from '@/models';
+import { type JobKind, type JobPayload, jobKinds } from './kinds';
+import { MAX_ATTEMPTS } from './lease';
+import { select } from './statement';
+
+interface NewJob<Kind extends JobKind> {
+  collaborationId: string;
+  kind: Kind;
+  surveyId: string | null;
+  payload: JobPayload<Kind>;
+  requestedBy: string | null;
+}
+
+/**
+ * Puts a job that has a row on the queue, in the caller's transaction.
+ *
+ * Its priority is the number of jobs that its collaboration has waiting: low goes first, so twenty
+ * jobs of one collaboration do not hold up the first of another.
+ */
+export async function deliver(
+  transaction: Transaction,
+  job: { id: string; kind: JobKind; collaborationId: string },
+): Promise<void> {
+  await select(
+    `select queue.add_job(
+       $1::text, json_build_object('jobId', $2::text), job_key := $2::text, max_attempts := $3::int,
+       priority := (select least(count(*), 10000)::int from job
+         where collaboration_id = $4::uuid and status = 'waiting' and id <> $2::uuid))`,
+    [job.kind, job.id, MAX_ATTEMPTS, job.collaborationId],
+    transaction,
+  );
+}
+
+async function insertJob<Kind extends JobKind>(
+  transaction: Transaction,
+  job: NewJob<Kind>,
+): Promise<string> {
+  const payload = jobKinds[job.kind].parse(job.payload);
+  const row = await JobRow.create({ ...job, payload }, { transaction });
+  await deliver(transaction, row);
+  return row.id;
+}
+
+/**
+ * Asks for the maps of a survey. A job that is open already is the answer: it looks again for
+ * missing maps before it ends, and its row is locked here so that it cannot end in between.
+ *
+ * @returns the id of the job that will compute them
+ */
+export async function enqueueMaps(
+  transaction: Transaction,
+  asked: {
+    collaborationId: string;
+    surveyId: string;
+    requestedBy: string | null;
+    targetIds?: string[];
+  },
+): Promise<string> {
+  const { collaborationId, surveyId, requestedBy, targetIds } = asked;
+  // One after the other: two requests for one survey would both find no open job.
+  await select('select id from survey where id = $1 for update', [surveyId], transaction);
+  const open = await select<{ id: string; payload: { targetIds?: string[] } }>(
+    `select id, payload from job where survey_id = $1 and kind = 'compute-maps'
+       and status in ('waiting', 'running') for update`,
+    [surveyId],
+    transaction,
+  );
+  if (open.length === 0) {
+    return insertJob(transaction, {
+      collaborationId,
+      kind: 'compute-maps',
+      surveyId,
+      requestedBy,
+      payload: targetIds ? { surveyId, targetIds } : { surveyId },
+    });
+  }
+  const wider = targetIds && open[0].payload.targetIds;
+  await JobRow.update(
+    {
+      // Asked for again after it was told to stop: the newer wish holds.
+      cancelRequestedAt: null,
+      payload: wider
+        ? { surveyId, targetIds: [...new Set([...wider, ...targetIds])] }
+        : { surveyId },
+    },
+    { where: { id: open[0].id }, transaction },
+  );
+  return open[0].id;
+}
+
+/** Asks for a run; the run's row, which names the job, is made in the same transaction. */
+export function enqueueRun(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  return insertJob(transaction, { ...asked, kind: 'compute-run', surveyId: null, payload: {} });
+}

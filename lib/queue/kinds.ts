@@ -1,0 +1,19 @@
+import { z } from 'zod';
+import { idSchema } from '@/lib/schemas/common';
+
+/** Every kind of job with the shape of its payload; the queue's task names are these keys. */
+export const jobKinds = {
+  /** Completeness maps of a survey's targets; all of them unless some are named. */
+  'compute-maps': z.object({
+    surveyId: idSchema,
+    targetIds: z.array(idSchema).min(1).optional(),
+  }),
+  /** The run that names this job. */
+  'compute-run': z.object({}),
+} as const;
+
+export type JobKind = keyof typeof jobKinds;
+export type JobPayload<Kind extends JobKind> = z.infer<(typeof jobKinds)[Kind]>;
+
+/** What the queue itself carries: the job's row holds everything else. */
+export const deliverySchema = z.object({ jobId: idSchema });

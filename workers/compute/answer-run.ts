@@ -1,0 +1,199 @@
+import {
+  displayRange,
+  equalTailedInterval,
+  highestDensityInterval,
+  isSetByPrior,
+  type Likelihood,
+  limitAtLowerFloor,
+  type PosteriorCurve,
+  posteriorCurve,
+  type RatePosterior,
+  type RatePrior,
+  ratePosterior,
+  TABLE_LEVELS,
+  upperLimit,
+  viewPopulation,
+} from '@/lib/inference';
+import { type Population, populationWeights } from '@/lib/population';
+import type { MapGrid } from '@/lib/sensitivity';
+import { priorFor } from '../prior-for';
+
+export interface AnswerRunInput {
+  /** Shape [star, mass, semiMajorAxis], round(65535 C), in the order of the stars. */
+  maps: Uint16Array;
+  grid: MapGrid;
+  population: Population;
+  likelihood: Likelihood;
+  prior: RatePrior;
+  credibleLevel: number;
+  /** Counted detections, each with the index of its star. */
+  detections: { name: string; star: number }[];
+  /** Per star, the surveys that list it, as indices. */
+  surveysOfStar: number[][];
+  surveys: number;
+}
+
+export interface RateSummary {
+  limit: number;
+  median: number;
+  mean: number;
+  interval68: [number, number];
+  highestDensity68: [number, number];
+  intervalAtLevel: [number, number];
+  isSetByPrior: boolean;
+  isConstrained: boolean;
+  curve: { value: number[]; density: number[]; cumulative: number[]; prior: number[] };
+}
+
+export interface LevelRow {
+  level: number;
+  hostFraction: number | null;
+  meanNumber: number | null;
+  hostFractionZero: number | null;
+  meanNumberZero: number | null;
+}
+
+export interface AnswerRunOutput {
+  completenessPerStar: number[];
+  exposure: number;
+  answer: RateSummary;
+  zero: RateSummary;
+  atTenthOfFloor: number | null;
+  levels: LevelRow[];
+  /** Averages over the stars, rows of mass. */
+  meanMap: number[][];
+  /** Per survey: stars for which this population's masses are seen at each semi-major axis. */
+  depth: number[][];
+}
+
+/** Everything that follows from the maps of a run and its question; sums run in the stars' order. */
+export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
+  const { maps, grid, population, likelihood, prior, credibleLevel: level } = input;
+  const view = viewPopulation(maps, grid, population);
+  const completeness = view.completenessPerStar as Float64Array;
+  refuseUnseen(input, completeness);
+  const detectedStars = input.detections.map(({ star }) => star);
+  const question = { likelihood, prior, completeness };
+  const posterior = ratePosterior({ ...question, detectedStars });
+  const none = ratePosterior({ ...question, detectedStars: [] });
+  const ranges = [displayRange(posterior), displayRange(none)];
+  const range: [number, number] = [
+    Math.min(...ranges.map(([from]) => from)),
+    Math.max(...ranges.map(([, to]) => to)),
+  ];
+  return {
+    completenessPerStar: [...completeness],
+    exposure: view.exposure,
+    answer: summarise(posterior, level, range),
+    zero: summarise(none, level, range),
+    atTenthOfFloor: limitAtLowerFloor({ ...question, detectedStars }, level),
+    levels: tabulateLevels(input, completeness, detectedStars),
+    meanMap: averageMaps(input),
+    depth: stackDepth(input),
+  };
+}
+
+function refuseUnseen({ detections }: AnswerRunInput, completeness: Float64Array): void {
+  const unseen = detections.find(({ star }) => completeness[star] === 0);
+  if (!unseen) return;
+  throw new RangeError(
+    `${unseen.name} was detected where the map of its star says nothing can be seen: ` +
+      'check the map, the ranges or the companion',
+  );
+}
+
+const CURVE_POINTS = 400;
+
+function summarise(posterior: RatePosterior, level: number, range: [number, number]): RateSummary {
+  return {
+    limit: upperLimit(posterior, level),
+    median: posterior.median,
+    mean: posterior.mean,
+    interval68: equalTailedInterval(posterior, 0.68),
+    highestDensity68: highestDensityInterval(posterior, 0.68),
+    intervalAtLevel: equalTailedInterval(posterior, level),
+    isSetByPrior: isSetByPrior(posterior, level),
+    isConstrained: posterior.constrained,
+    curve: drawable(posteriorCurve(posterior, CURVE_POINTS, range), posterior),
+  };
+}
+
+/** As JSON can hold it: an improper prior has no curve, an infinite end is drawn from inside it. */
+function drawable(curve: PosteriorCurve, posterior: RatePosterior): RateSummary['curve'] {
+  const { value, density, cumulative, priorDensity } = curve;
+  const step = value[2] - value[1];
+  const isImproper = priorDensity.every(Number.isNaN);
+  const inside = (x: number, i: number) =>
+    posterior.priorDensity(i === 0 ? x + 0.25 * step : x - 0.25 * step);
+  return {
+    value: [...value],
+    density: [...density],
+    cumulative: [...cumulative],
+    prior: isImproper
+      ? []
+      : [...priorDensity].map((p, i) => (Number.isNaN(p) ? inside(value[i], i) : p)),
+  };
+}
+
+function tabulateLevels(
+  input: AnswerRunInput,
+  completeness: Float64Array,
+  detectedStars: number[],
+): LevelRow[] {
+  const { prior, credibleLevel } = input;
+  const posteriorOf = (likelihood: Likelihood, detected: number[]) => {
+    const own = priorFor(prior, likelihood);
+    if (own === null) return null;
+    return ratePosterior({ likelihood, prior: own, completeness, detectedStars: detected });
+  };
+  const fraction = posteriorOf('host-fraction', detectedStars);
+  const fractionZero = posteriorOf('host-fraction', []);
+  const number = posteriorOf('mean-number', detectedStars);
+  const numberZero = posteriorOf('mean-number', []);
+  const limit = (posterior: RatePosterior | null, level: number) =>
+    posterior && upperLimit(posterior, level);
+  return [...new Set([...TABLE_LEVELS, credibleLevel])]
+    .sort((a, b) => a - b)
+    .map((level) => ({
+      level,
+      hostFraction: limit(fraction, level),
+      meanNumber: limit(number, level),
+      hostFractionZero: limit(fractionZero, level),
+      meanNumberZero: limit(numberZero, level),
+    }));
+}
+
+function averageMaps({ maps, grid }: AnswerRunInput): number[][] {
+  const rows = grid.massMjup.length;
+  const columns = grid.semiMajorAxisAu.length;
+  const size = rows * columns;
+  const stars = maps.length / size;
+  // Whole numbers: the sum is exact, whatever its order.
+  const sum = new Float64Array(size);
+  for (let i = 0; i < maps.length; i++) sum[i % size] += maps[i];
+  return Array.from({ length: rows }, (_, row) =>
+    Array.from(sum.subarray(row * columns, (row + 1) * columns), (s) => s / (65_535 * stars)),
+  );
+}
+
+/** A star that several surveys list is shared out among them, so that the stack counts it once. */
+function stackDepth(input: AnswerRunInput): number[][] {
+  const { maps, grid, population, surveysOfStar, surveys } = input;
+  const weights = populationWeights(grid, population);
+  const rows = grid.massMjup.length;
+  const columns = grid.semiMajorAxisAu.length;
+  let whole = 0;
+  for (const weight of weights.mass) whole += weight;
+  const depth = Array.from({ length: surveys }, () => new Array<number>(columns).fill(0));
+  surveysOfStar.forEach((own, star) => {
+    for (let column = 0; column < columns; column++) {
+      let seen = 0;
+      for (let row = 0; row < rows; row++) {
+        seen += weights.mass[row] * maps[(star * rows + row) * columns + column];
+      }
+      const share = seen / (65_535 * whole * own.length);
+      for (const survey of own) depth[survey][column] += share;
+    }
+  });
+  return depth;
+}

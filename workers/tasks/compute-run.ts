@@ -1,0 +1,189 @@
+import { Transaction } from 'sequelize';
+import { InputError, NotFound } from '@/lib/errors';
+import { complete, hold, reportProgress } from '@/lib/queue/attempt';
+import { findEdgeOutside } from '@/lib/queue/preconditions';
+import { select } from '@/lib/queue/statement';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import { type RunInputs, runResultSchema } from '@/lib/schemas/runs';
+import type { MapGrid } from '@/lib/sensitivity';
+import { database, inTransaction, PopulationRow, RunRow } from '@/models';
+import { digestOf } from '@/models/digest';
+import type { AnswerRunInput, AnswerRunOutput } from '../compute/answer-run';
+import type { Work } from '../perform';
+import { type MergedCompanions, mergeCompanions } from './run-companions';
+import { combineMaps, commonGrid } from './run-maps';
+import { assembleResult, countCompanions } from './run-result';
+import { collectSample, type Sample } from './run-sample';
+import { type MapStack, stackMaps } from './run-stack';
+import { describeCombination, describeMaps } from './run-words';
+
+/** What a run starts from, read at one moment. */
+interface Collected {
+  run: RunRow;
+  population: PopulationRow;
+  sample: Sample;
+  companions: MergedCompanions;
+}
+
+/**
+ * Computes one run: sample, maps, population, posterior. The result is stored once, in the
+ * transaction that ends the job, by the attempt that holds it.
+ */
+export async function performComputeRun(work: Work): Promise<void> {
+  const { attempt } = work;
+  const enter = (stage: string, total: number) => {
+    work.signal.throwIfAborted();
+    return reportProgress(attempt, stage, 0, total);
+  };
+  await enter('collect', 1);
+  const collected = await collect(work);
+  const { run, population, sample, companions } = collected;
+  const { recipe } = run;
+  const grid = commonGrid(sample);
+  const digests = await combineMaps(work, sample, recipe.combination, grid, (done, total) =>
+    reportProgress(attempt, 'combine', done, total),
+  );
+  await enter('integrate', sample.stars.length);
+  const { definition } = population;
+  const stack = await stackMaps(attempt.collaborationId, sample.stars, digests, grid, definition);
+  refuseOutside(recipe, population, stack);
+  await enter('posterior', 1);
+  const inputs = describeInputs(collected, stack, grid);
+  const counted = countCompanions(companions.confirmed, inputs, definition, recipe);
+  const output = await work.pool.run<AnswerRunInput, AnswerRunOutput>(
+    'answer-run',
+    {
+      maps: stack.maps,
+      grid,
+      population: definition,
+      likelihood: recipe.likelihood,
+      prior: recipe.prior,
+      credibleLevel: recipe.credibleLevel,
+      detections: counted.counted.map(({ name }, i) => ({
+        name,
+        star: counted.detectedStars[i],
+      })),
+      surveysOfStar: inputs.stars.map(({ surveys }) =>
+        surveys.map((id) => inputs.surveys.findIndex((survey) => survey.id === id)),
+      ),
+      surveys: inputs.surveys.length,
+    },
+    { signal: work.signal, transfer: [stack.maps.buffer] },
+  );
+  await enter('store', 1);
+  const result = runResultSchema.parse(
+    assembleResult({ inputs, recipe, population: definition, stack, counted, output, grid }),
+  );
+  await store(work, run, inputs, result, output.completenessPerStar);
+}
+
+function collect({ attempt }: Work): Promise<Collected> {
+  const { REPEATABLE_READ: isolationLevel } = Transaction.ISOLATION_LEVELS;
+  return database().transaction({ isolationLevel }, async (transaction) => {
+    const { collaborationId, jobId } = attempt;
+    const run = await RunRow.findOne({ where: { jobId, collaborationId }, transaction });
+    if (!run) throw new NotFound('run for this job');
+    const population = await PopulationRow.findOne({
+      where: { id: run.recipe.populationId, collaborationId },
+      transaction,
+    });
+    if (!population) throw new NotFound('population');
+    const sample = await collectSample(collaborationId, run.recipe.surveyIds, transaction);
+    const companions = await mergeCompanions(sample.stars, population.definition, transaction);
+    return { run, population, sample, companions };
+  });
+}
+
+function refuseOutside(recipe: AnalysisRecipe, population: PopulationRow, stack: MapStack): void {
+  const fault = findEdgeOutside(population.definition, stack.reach);
+  if (fault && (!recipe.zeroOutsideMaps || stack.shareOutsideMaps >= 1)) {
+    throw new InputError({ code: fault.code, message: fault.message });
+  }
+}
+
+function describeInputs(
+  { run, population, sample, companions }: Collected,
+  stack: MapStack,
+  grid: MapGrid,
+): RunInputs {
+  const entriesOf = (surveyId: string) =>
+    stack.stars.filter(({ surveys }) => surveys.includes(surveyId)).length;
+  const shared = sample.stars.filter(({ entries }) => entries.length > 1).length;
+  return {
+    engineVersion: run.engineVersion,
+    seed: run.seed,
+    grid: { massMjup: [...grid.massMjup], semiMajorAxisAu: [...grid.semiMajorAxisAu] },
+    population: {
+      id: population.id,
+      key: `P-${population.number}`,
+      version: population.version,
+      name: population.name,
+      digest: population.digest,
+    },
+    surveys: sample.surveys.map(({ row: { id, slug, name, position } }) => ({
+      id,
+      slug,
+      name,
+      position,
+      entries: entriesOf(id),
+    })),
+    combination: describeCombination(run.recipe.combination, shared, sample.surveys.length),
+    ...describeMaps(sample),
+    stars: stack.stars,
+    companions: companions.confirmed,
+    undecided: companions.undecided.map((candidate) => ({ ...candidate })),
+    leftOut: sample.leftOut,
+  };
+}
+
+async function store(
+  { attempt }: Work,
+  run: RunRow,
+  inputs: RunInputs,
+  result: RunRow['result'],
+  completeness: number[],
+): Promise<void> {
+  await inTransaction(async (transaction) => {
+    await hold(transaction, attempt);
+    await run.update(
+      {
+        inputs,
+        inputsDigest: digestOf({ recipe: run.recipe, inputs }),
+        result,
+        resultDigest: digestOf(result),
+        finishedAt: new Date(),
+      },
+      { transaction },
+    );
+    await storeRunStars(attempt.collaborationId, run.id, inputs, completeness, transaction);
+    await reportProgress(attempt, 'store', 1, 1, transaction);
+    await complete(transaction, attempt);
+  });
+}
+
+async function storeRunStars(
+  collaborationId: string,
+  runId: string,
+  inputs: RunInputs,
+  completeness: number[],
+  transaction: Transaction,
+): Promise<void> {
+  const rows = inputs.stars.map(({ starId, mapId, surveys }, position) => ({
+    position,
+    star_id: starId,
+    map_id: mapId,
+    survey_ids: surveys,
+    mean_completeness: completeness[position],
+  }));
+  await select(
+    `insert into run_star
+       (run_id, position, collaboration_id, star_id, map_id, survey_ids, mean_completeness)
+     select $1, s.position, $2, s.star_id, s.map_id,
+       array(select jsonb_array_elements_text(s.survey_ids)::uuid), s.mean_completeness
+     from jsonb_to_recordset($3::jsonb) as s(
+       position int, star_id uuid, map_id uuid, survey_ids jsonb, mean_completeness double precision)
+     returning position`,
+    [runId, collaborationId, JSON.stringify(rows)],
+    transaction,
+  );
+}

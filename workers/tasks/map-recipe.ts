@@ -1,0 +1,103 @@
+import type { Transaction } from 'sequelize';
+import { InputError } from '@/lib/errors';
+import { logSpacedAxis } from '@/lib/numerics/grid';
+import type { MapSettings } from '@/lib/schemas/surveys';
+import {
+  type CoolingRelation,
+  ENGINE_VERSION,
+  type MapGrid,
+  type SensitivitySettings,
+  type StarInputs,
+} from '@/lib/sensitivity';
+import { CoolingTableRow } from '@/models';
+import { digestOf } from '@/models/digest';
+import type { OwnCurve } from './star-inputs';
+
+/** How a survey's curves become maps: its settings with the cooling relation that they name. */
+export interface MapRecipe {
+  grid: MapGrid;
+  settings: SensitivitySettings;
+  cooling: CoolingRelation;
+  /** Name for conditions and provenance. */
+  coolingName: string;
+  coolingDigest: string;
+}
+
+export function gridOf(settings: MapSettings): MapGrid {
+  const { massMjup: mass, semiMajorAxisAu: axis } = settings;
+  return {
+    massMjup: logSpacedAxis(mass.min, mass.max, mass.count),
+    semiMajorAxisAu: logSpacedAxis(axis.min, axis.max, axis.count),
+  };
+}
+
+async function loadCooling(
+  collaborationId: string,
+  { cooling }: MapSettings,
+  transaction?: Transaction,
+): Promise<Pick<MapRecipe, 'cooling' | 'coolingName' | 'coolingDigest'>> {
+  if (cooling.kind === 'built-in') {
+    return {
+      cooling: { kind: 'built-in' },
+      coolingName: 'built-in approximate cooling law',
+      coolingDigest: 'built-in',
+    };
+  }
+  const row = await CoolingTableRow.findOne({
+    where: { id: cooling.coolingTableId, collaborationId },
+    transaction,
+  });
+  if (!row) {
+    throw new InputError({
+      code: 'no-cooling-table',
+      message: 'The cooling table that the survey names is not there; choose another',
+    });
+  }
+  const magnitudes = Object.entries(row.magnitudes).map(([band, values]) => [
+    band,
+    Float64Array.from(values, (value) => value ?? Number.NaN),
+  ]);
+  return {
+    cooling: {
+      kind: 'table',
+      table: {
+        name: row.name,
+        massMjup: Float64Array.from(row.massMjup),
+        ageMyr: Float64Array.from(row.ageMyr),
+        magnitudes: Object.fromEntries(magnitudes),
+      },
+    },
+    coolingName: `cooling table ${row.name}`,
+    coolingDigest: row.digest,
+  };
+}
+
+export async function loadRecipe(
+  collaborationId: string,
+  settings: MapSettings,
+  transaction?: Transaction,
+): Promise<MapRecipe> {
+  const { eccentricity, threshold, massOutsideTable, ageOutsideTable } = settings;
+  return {
+    grid: gridOf(settings),
+    settings: { eccentricity, threshold, massOutsideTable, ageOutsideTable },
+    ...(await loadCooling(collaborationId, settings, transaction)),
+  };
+}
+
+/** Everything that a map's values follow from; its digest is the map's. */
+export function mapInputs(star: StarInputs, ownCurves: OwnCurve[], recipe: MapRecipe) {
+  return {
+    kind: 'computed',
+    engineVersion: ENGINE_VERSION,
+    curves: ownCurves.map(({ curve }) => curve.digest).sort(),
+    hostMags: star.hostMags,
+    age: star.age,
+    distance: star.distance,
+    cooling: recipe.coolingDigest,
+    settings: recipe.settings,
+    grid: recipe.grid,
+  };
+}
+
+export const mapDigest = (inputs: ReturnType<typeof mapInputs>): string => digestOf(inputs);

@@ -1,0 +1,195 @@
+import { InputError } from '@/lib/errors';
+import { hold } from '@/lib/queue/attempt';
+import { listFirst } from '@/lib/queue/preconditions';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import {
+  type CompletenessMap,
+  combineDeepest,
+  combineIndependent,
+  ENGINE_VERSION,
+  type MapGrid,
+} from '@/lib/sensitivity';
+import { CompletenessMapRow, inTransaction } from '@/models';
+import { digestOf } from '@/models/digest';
+import { unpackMap } from '@/models/map-values';
+import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
+import { inLanes } from '../lanes';
+import type { Work } from '../perform';
+import { mapInputs } from './map-recipe';
+import { type MapToStore, storeMaps } from './map-store';
+import type { Entry, Sample, SampleStar } from './run-sample';
+import { buildStarInputs } from './star-inputs';
+
+type Rule = 'same-position' | 'deepest' | 'independent';
+
+/** Digest of a star's map in this run: its own, or the one combined from its entries. */
+export type MapDigests = Map<string, string>;
+
+const sameAxes = (a: number[] | Float64Array, b: number[] | Float64Array) =>
+  a.length === b.length && a.every((value, i) => value === b[i]);
+
+/** The grid of a run: that of its maps where they share one, else that of its first survey. */
+export function commonGrid(sample: Sample): MapGrid {
+  const maps = sample.stars.flatMap(({ entries }) => entries.map(({ map }) => map));
+  const [first] = maps;
+  const isShared = maps.every(
+    (map) =>
+      sameAxes(map.massMjup, first.massMjup) &&
+      sameAxes(map.semiMajorAxisAu, first.semiMajorAxisAu),
+  );
+  if (!isShared) return sample.surveys[0].recipe.grid;
+  return {
+    massMjup: Float64Array.from(first.massMjup),
+    semiMajorAxisAu: Float64Array.from(first.semiMajorAxisAu),
+  };
+}
+
+const hasCurve = (entry: Entry) => entry.curves.length > 0 && entry.map.origin === 'computed';
+const recipeDigest = ({ survey: { recipe } }: Entry) =>
+  digestOf({ cooling: recipe.coolingDigest, settings: recipe.settings });
+const isOneRecipe = (entries: Entry[]) =>
+  entries.every((entry) => recipeDigest(entry) === recipeDigest(entries[0]));
+
+function refuse(code: string, stars: SampleStar[], words: string): void {
+  if (stars.length === 0) return;
+  const names = listFirst(stars.map(({ name }) => name));
+  throw new InputError({ code, message: `${words}: ${names}` });
+}
+
+/** The rule for one star; explicit rules that a star cannot follow are refused before. */
+function ruleFor({ entries }: SampleStar, asked: AnalysisRecipe['combination']): Rule {
+  if (asked === 'deepest' || asked === 'independent' || asked === 'same-position') return asked;
+  return entries.every(hasCurve) && isOneRecipe(entries) ? 'same-position' : 'deepest';
+}
+
+function checkRule(shared: SampleStar[], asked: AnalysisRecipe['combination']): void {
+  if (asked === 'refuse') {
+    refuse('shared-stars', shared, 'Stars in several surveys, which this analysis refuses');
+  }
+  if (asked !== 'same-position') return;
+  refuse(
+    'no-curve',
+    shared.filter(({ entries }) => !entries.every(hasCurve)),
+    'The rule "same position" needs a contrast curve in every survey; missing for',
+  );
+  refuse(
+    'map-settings',
+    shared.filter(({ entries }) => !isOneRecipe(entries)),
+    'The rule "same position" needs equal map settings in all surveys; they differ for',
+  );
+}
+
+interface Combination {
+  star: SampleStar;
+  digest: string;
+  inputs: Record<string, unknown>;
+  rule: Rule;
+}
+
+function planCombination(star: SampleStar, rule: Rule, grid: MapGrid): Combination {
+  const { entries } = star;
+  const { recipe } = entries[0].survey;
+  const inputs =
+    rule === 'same-position'
+      ? {
+          ...mapInputs(jointInputs(star), ownCurves(star), { ...recipe, grid }),
+          kind: 'combined',
+          rule,
+        }
+      : {
+          kind: 'combined',
+          rule,
+          engineVersion: ENGINE_VERSION,
+          maps: entries.map(({ map }) => map.digest).sort(),
+        };
+  return { star, digest: digestOf(inputs), inputs: { ...inputs, star: star.name }, rule };
+}
+
+const ownCurves = ({ entries }: SampleStar) =>
+  entries.flatMap(({ target, curves }) => curves.map((curve) => ({ target, curve })));
+const jointInputs = (star: SampleStar) => buildStarInputs(star.entries[0].target, ownCurves(star));
+
+/**
+ * Sees to it that every star has one map: stars in several surveys get a combined one, which is
+ * stored like any other and found again by its digest.
+ *
+ * @throws InputError where a star cannot follow the rule that was asked for
+ */
+export async function combineMaps(
+  work: Work,
+  sample: Sample,
+  asked: AnalysisRecipe['combination'],
+  grid: MapGrid,
+  onProgress: (done: number, total: number) => Promise<void>,
+): Promise<MapDigests> {
+  const digests: MapDigests = new Map(
+    sample.stars.map(({ starId, entries: [{ map }] }) => [starId, map.digest]),
+  );
+  const shared = sample.stars.filter(({ entries }) => entries.length > 1);
+  checkRule(shared, asked);
+  const plans = shared.map((star) => planCombination(star, ruleFor(star, asked), grid));
+  for (const { star, digest } of plans) digests.set(star.starId, digest);
+  const { collaborationId } = work.attempt;
+  const stored = await CompletenessMapRow.findAll({
+    attributes: ['digest'],
+    where: { collaborationId, digest: plans.map(({ digest }) => digest) },
+  });
+  const known = new Set(stored.map(({ digest }) => digest));
+  const missing = plans.filter(({ digest }) => !known.has(digest));
+  let done = plans.length - missing.length;
+  await onProgress(done, plans.length);
+  await inLanes(missing, work.pool.threads + 1, async (plan) => {
+    const map = await (plan.rule === 'same-position'
+      ? jointMap(work, plan, grid)
+      : combinedMap(plan));
+    await inTransaction(async (transaction) => {
+      await hold(transaction, work.attempt);
+      await storeMaps(collaborationId, [map], transaction);
+    });
+    done++;
+    await onProgress(done, plans.length);
+  });
+  return digests;
+}
+
+async function jointMap(work: Work, plan: Combination, grid: MapGrid): Promise<MapToStore> {
+  const { star, digest, inputs } = plan;
+  const { cooling, settings } = star.entries[0].survey.recipe;
+  const [answer] = await work.pool.run<CompleteMapsInput, CompletedMap[]>(
+    'complete-maps',
+    { stars: [jointInputs(star)], cooling, grid, settings },
+    { signal: work.signal },
+  );
+  if ('fault' in answer) {
+    throw new InputError({ code: 'no-map', message: `${star.name}: ${answer.fault}` });
+  }
+  return { ...grid, digest, inputs, ...answer };
+}
+
+async function combinedMap({ star, digest, inputs, rule }: Combination): Promise<MapToStore> {
+  const rows = await CompletenessMapRow.findAll({
+    where: { id: star.entries.map(({ map }) => map.id) },
+    order: [['digest', 'ASC']],
+  });
+  const maps = rows.map(mapOfRow);
+  const combined = rule === 'deepest' ? combineDeepest(maps) : combineIndependent(maps);
+  const flagged = new Set(rows.flatMap(flaggedMasses));
+  const flaggedMassNodes = [...combined.massMjup.keys()].filter((i) =>
+    flagged.has(combined.massMjup[i]),
+  );
+  return { ...combined, digest, inputs, report: { flaggedMassNodes } };
+}
+
+export function mapOfRow(row: CompletenessMapRow): CompletenessMap {
+  return {
+    massMjup: Float64Array.from(row.massMjup),
+    semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
+    completeness: unpackMap(row.nodeValues),
+  };
+}
+
+/** Masses at which a map rests on the edge of its cooling relation or beyond it. */
+export function flaggedMasses(row: CompletenessMapRow): number[] {
+  const { flaggedMassNodes } = row.report;
+  return Array.isArray(flaggedMassNodes) ? flaggedMassNodes.map((i) => row.massMjup[i]) : [];
+}

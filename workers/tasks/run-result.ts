@@ -1,0 +1,158 @@
+import { describeLimit, type StatementInputs } from '@/lib/inference';
+import { isInside, type Population } from '@/lib/population';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import type { DetectionView, RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { MapGrid } from '@/lib/sensitivity';
+import type { AnswerRunOutput } from '../compute/answer-run';
+import type { MapStack } from './run-stack';
+
+export interface CountedCompanions {
+  counted: DetectionView[];
+  outside: DetectionView[];
+  mergedNames: string[];
+  /** One star index per counted companion. */
+  detectedStars: number[];
+}
+
+/** Which confirmed companions the likelihood counts. */
+export function countCompanions(
+  confirmed: DetectionView[],
+  inputs: RunInputs,
+  population: Population,
+  recipe: AnalysisRecipe,
+): CountedCompanions {
+  const inside = confirmed.filter((companion) =>
+    isInside(population, companion.massMjup, companion.semiMajorAxisAu),
+  );
+  const outside = confirmed.filter((companion) => !inside.includes(companion));
+  const counted = recipe.detections === 'none' ? [] : inside;
+  const isSecond = ({ starId }: DetectionView, index: number) =>
+    counted.findIndex((other) => other.starId === starId) < index;
+  return {
+    counted,
+    outside,
+    mergedNames:
+      recipe.likelihood === 'host-fraction' ? counted.filter(isSecond).map(({ name }) => name) : [],
+    detectedStars: counted.map(({ starId }) =>
+      inputs.stars.findIndex((star) => star.starId === starId),
+    ),
+  };
+}
+
+interface Parts {
+  inputs: RunInputs;
+  recipe: AnalysisRecipe;
+  population: Population;
+  stack: Pick<MapStack, 'shareOutsideMaps' | 'shareFlaggedCooling'>;
+  counted: CountedCompanions;
+  output: AnswerRunOutput;
+  grid: MapGrid;
+}
+
+/** The result as it is stored: every number with what it needs to be read. */
+export function assembleResult(parts: Parts): RunResult {
+  const { inputs, recipe, stack, counted, output, grid } = parts;
+  const { counted: detections, outside, mergedNames } = counted;
+  return {
+    quantity: quantityOf(recipe),
+    credibleLevel: recipe.credibleLevel,
+    stars: inputs.stars.length,
+    entries: inputs.surveys.reduce((sum, { entries }) => sum + entries, 0),
+    exposure: output.exposure,
+    answer: output.answer,
+    zero: output.zero,
+    atTenthOfFloor: output.atTenthOfFloor,
+    counted: detections,
+    outside,
+    mergedNames,
+    levels: output.levels,
+    shareOutsideMaps: stack.shareOutsideMaps,
+    shareFlaggedCooling: stack.shareFlaggedCooling,
+    meanMap: {
+      massMjup: [...grid.massMjup],
+      semiMajorAxisAu: [...grid.semiMajorAxisAu],
+      completeness: output.meanMap,
+    },
+    depth: {
+      semiMajorAxisAu: [...grid.semiMajorAxisAu],
+      surveys: inputs.surveys.map(({ id }, i) => ({ id, stars: output.depth[i] })),
+    },
+    starTable: tabulateStars(parts),
+    statement: stateResult(parts),
+  };
+}
+
+const quantityOf = ({ likelihood }: AnalysisRecipe) =>
+  likelihood === 'host-fraction' ? 'host_fraction' : 'companions_per_star';
+
+function tabulateStars({ inputs, counted, output }: Parts): RunResult['starTable'] {
+  return inputs.stars
+    .map(({ starId, name, surveys }, i) => ({
+      starId,
+      name,
+      surveys,
+      probability: output.completenessPerStar[i],
+      hosts: counted.counted.filter((found) => found.starId === starId).map((found) => found.name),
+    }))
+    .sort((a, b) => b.probability - a.probability);
+}
+
+function stateResult({ inputs, recipe, population, stack, counted, output }: Parts) {
+  const { answer } = output;
+  const likelihoodCount =
+    recipe.likelihood === 'host-fraction'
+      ? new Set(counted.detectedStars).size
+      : counted.detectedStars.length;
+  const stated: StatementInputs = {
+    quantity: quantityOf(recipe),
+    limit: answer.limit,
+    credibleLevel: recipe.credibleLevel,
+    population,
+    prior: recipe.prior,
+    detections: likelihoodCount,
+    stars: inputs.stars.length,
+    exposure: output.exposure,
+    combinationRule: inputs.combination,
+    cooling: inputs.cooling,
+    eccentricity: inputs.eccentricity,
+    threshold: inputs.threshold,
+    shareOutside: Math.max(stack.shareOutsideMaps, 0),
+    constrained: answer.isConstrained,
+    setByPrior: answer.isSetByPrior,
+    ...(likelihoodCount > 0 && {
+      interval: {
+        kind: 'equal-tailed' as const,
+        low: answer.interval68[0],
+        high: answer.interval68[1],
+        level: 0.68,
+      },
+    }),
+  };
+  const { sentence, conditions } = describeLimit(stated);
+  return { sentence, conditions: [...conditions, ...extraConditions(inputs, stack, counted)] };
+}
+
+/** What the likelihood's own conditions do not say. */
+function extraConditions(
+  inputs: RunInputs,
+  { shareFlaggedCooling }: Parts['stack'],
+  { outside, mergedNames }: CountedCompanions,
+): string[] {
+  const conditions: string[] = [];
+  if (shareFlaggedCooling > 0) {
+    const share = (100 * shareFlaggedCooling).toPrecision(2);
+    conditions.push(
+      `Cooling limits: ${Number(share)} % of this population at masses beyond the cooling relation's validity`,
+    );
+  }
+  if (outside.length > 0) {
+    conditions.push(`Outside the ranges: ${outside.map(({ name }) => name).join(', ')}`);
+  }
+  if (mergedNames.length > 0) {
+    conditions.push(`Counted with another of the same star: ${mergedNames.join(', ')}`);
+  }
+  if (inputs.leftOut.length > 0) {
+    conditions.push(`Left out: ${inputs.leftOut.length} entries, each with a reason`);
+  }
+  return conditions;
+}

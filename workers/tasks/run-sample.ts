@@ -1,0 +1,145 @@
+import type { Transaction } from 'sequelize';
+import { InputError } from '@/lib/errors';
+import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
+import type { RunInputs } from '@/lib/schemas/runs';
+import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
+import { loadRecipe, type MapRecipe } from './map-recipe';
+
+/** A survey of the run with the recipe of its maps. */
+export interface SampleSurvey {
+  row: SurveyRow;
+  recipe: MapRecipe;
+}
+
+/** A star as one survey lists it, with its ready map (its values are read later). */
+export interface Entry {
+  target: TargetRow;
+  survey: SampleSurvey;
+  map: CompletenessMapRow;
+  curves: ContrastCurveRow[];
+}
+
+export interface SampleStar {
+  starId: string;
+  name: string;
+  /** By the surveys' order; at least one. */
+  entries: Entry[];
+}
+
+export interface Sample {
+  surveys: SampleSurvey[];
+  /** By name: the order of every sum. */
+  stars: SampleStar[];
+  leftOut: RunInputs['leftOut'];
+}
+
+type LoadedTarget = TargetRow & { star: StarRow };
+
+async function loadSurveys(
+  collaborationId: string,
+  surveyIds: string[],
+  transaction: Transaction,
+): Promise<SampleSurvey[]> {
+  const rows = await SurveyRow.findAll({
+    where: { collaborationId, id: surveyIds },
+    order: [
+      ['position', 'ASC'],
+      ['id', 'ASC'],
+    ],
+    transaction,
+  });
+  if (rows.length !== new Set(surveyIds).size) {
+    throw new InputError({
+      code: 'no-survey',
+      message: 'A survey that the analysis names is not there any more; choose its surveys again',
+    });
+  }
+  const surveys: SampleSurvey[] = [];
+  for (const row of rows) {
+    const recipe = await loadRecipe(collaborationId, row.mapSettings, transaction);
+    surveys.push({ row, recipe });
+  }
+  return surveys;
+}
+
+async function loadTargets(surveyIds: string[], transaction: Transaction) {
+  const targets = (await TargetRow.findAll({
+    where: { surveyId: surveyIds },
+    include: [{ model: StarRow, as: 'star' }],
+    transaction,
+  })) as LoadedTarget[];
+  const maps = await CompletenessMapRow.findAll({
+    attributes: { exclude: ['nodeValues'] },
+    where: { id: targets.flatMap(({ mapId }) => mapId ?? []) },
+    transaction,
+  });
+  const curves = await ContrastCurveRow.findAll({
+    where: { targetId: targets.map(({ id }) => id), replacedAt: null },
+    order: [['digest', 'ASC']],
+    transaction,
+  });
+  const curvesOf = new Map<string, ContrastCurveRow[]>();
+  for (const curve of curves) {
+    const list = curvesOf.get(curve.targetId);
+    if (list) list.push(curve);
+    else curvesOf.set(curve.targetId, [curve]);
+  }
+  return { targets, mapOf: new Map(maps.map((map) => [map.id, map])), curvesOf };
+}
+
+const byName = (a: { name: string }, b: { name: string }) =>
+  a.name < b.name ? -1 : a.name > b.name ? 1 : 0;
+
+/**
+ * The stars that a run rests on, every star once, and the entries that it leaves out.
+ *
+ * @throws InputError when no star is left, or when a star that should have a map has none
+ */
+export async function collectSample(
+  collaborationId: string,
+  surveyIds: string[],
+  transaction: Transaction,
+): Promise<Sample> {
+  const surveys = await loadSurveys(collaborationId, surveyIds, transaction);
+  const { targets, mapOf, curvesOf } = await loadTargets(
+    surveys.map(({ row }) => row.id),
+    transaction,
+  );
+  const leftOut: Sample['leftOut'] = [];
+  const withoutMap: string[] = [];
+  const stars = new Map<string, SampleStar>();
+  for (const survey of surveys) {
+    const own = targets.filter(({ surveyId }) => surveyId === survey.row.id).sort(byName);
+    for (const target of own) {
+      const curves = curvesOf.get(target.id) ?? [];
+      const map = target.mapState === 'ready' && target.mapId ? mapOf.get(target.mapId) : undefined;
+      const leaveOut = (reason: string) =>
+        leftOut.push({ name: target.name, survey: survey.row.name, reason });
+      if (target.leftOutReason !== null) leaveOut(target.leftOutReason);
+      else if (map) addEntry(stars, target.star, { target, survey, map, curves });
+      else if (target.mapState === 'none' && curves.length === 0) leaveOut('no curve and no map');
+      else withoutMap.push(target.name);
+    }
+  }
+  refuseMissingMaps(withoutMap);
+  const nothing = findEmptySelection(stars.size, targets.length);
+  if (nothing) throw new InputError(nothing);
+  return { surveys, stars: [...stars.values()].sort(byName), leftOut };
+}
+
+function addEntry(stars: Map<string, SampleStar>, star: StarRow, entry: Entry): void {
+  const known = stars.get(star.id);
+  if (known) known.entries.push(entry);
+  else stars.set(star.id, { starId: star.id, name: star.name, entries: [entry] });
+}
+
+function refuseMissingMaps(names: string[]): void {
+  if (names.length === 0) return;
+  const count = names.length === 1 ? '1 star has' : `${names.length} stars have`;
+  throw new InputError({
+    code: 'no-map',
+    message:
+      `${count} no completeness map: ${listFirst(names)}. ` +
+      'Compute the maps of the survey, or leave these targets out with a reason',
+  });
+}

@@ -1,0 +1,130 @@
+import { type Population, populationWeights } from '@/lib/population';
+import type { RunInputs } from '@/lib/schemas/runs';
+import { encodeMap, type MapGrid, regridNodes } from '@/lib/sensitivity';
+import { CompletenessMapRow } from '@/models';
+import { flaggedMasses, type MapDigests, mapOfRow } from './run-maps';
+import type { SampleStar } from './run-sample';
+
+/** Maps read at once: some megabytes. */
+const READ_AT_ONCE = 200;
+
+export interface MapStack {
+  /** Shape [star, mass, semiMajorAxis], round(65535 C), on the run's grid. */
+  maps: Uint16Array;
+  stars: RunInputs['stars'];
+  /** Mean over the stars of the population's share outside their maps. */
+  shareOutsideMaps: number;
+  /** Mean over the stars of the population's share at masses that the cooling relation flags. */
+  shareFlaggedCooling: number;
+  reach: {
+    massMinMjup: number;
+    massMaxMjup: number;
+    semiMajorAxisMinAu: number;
+    semiMajorAxisMaxAu: number;
+  };
+}
+
+/**
+ * Reads the stars' maps and lays them on the run's grid, encoded as the page will get them: worker
+ * and page then start from the same numbers.
+ */
+export async function stackMaps(
+  collaborationId: string,
+  sampleStars: SampleStar[],
+  digests: MapDigests,
+  grid: MapGrid,
+  population: Population,
+): Promise<MapStack> {
+  const size = grid.massMjup.length * grid.semiMajorAxisAu.length;
+  const maps = new Uint16Array(sampleStars.length * size);
+  const stars: MapStack['stars'] = [];
+  const share = shareCounter(population, grid);
+  const reach = reachOf(grid);
+  for (let start = 0; start < sampleStars.length; start += READ_AT_ONCE) {
+    const part = sampleStars.slice(start, start + READ_AT_ONCE);
+    const rows = await CompletenessMapRow.findAll({
+      where: {
+        collaborationId,
+        digest: part.map(({ starId }) => digests.get(starId) as string),
+      },
+    });
+    const rowOf = new Map(rows.map((row) => [row.digest, row]));
+    part.forEach((star, i) => {
+      const row = rowOf.get(digests.get(star.starId) as string);
+      if (!row) throw new Error(`the map of ${star.name} is not stored`);
+      maps.set(valuesOnGrid(row, grid), (start + i) * size);
+      narrow(reach, row);
+      share.count(row);
+      stars.push({
+        starId: star.starId,
+        name: star.name,
+        surveys: star.entries.map(({ survey }) => survey.row.id),
+        mapId: row.id,
+        mapDigest: row.digest,
+        mapChecksum: row.checksum,
+      });
+    });
+  }
+  return { maps, stars, reach, ...share.means() };
+}
+
+function valuesOnGrid(row: CompletenessMapRow, grid: MapGrid): Uint16Array {
+  const map = mapOfRow(row);
+  return encodeMap(regridNodes(map, grid).map.completeness);
+}
+
+function reachOf(grid: MapGrid): MapStack['reach'] {
+  return {
+    massMinMjup: grid.massMjup[0],
+    massMaxMjup: grid.massMjup[grid.massMjup.length - 1],
+    semiMajorAxisMinAu: grid.semiMajorAxisAu[0],
+    semiMajorAxisMaxAu: grid.semiMajorAxisAu[grid.semiMajorAxisAu.length - 1],
+  };
+}
+
+function narrow(reach: MapStack['reach'], row: CompletenessMapRow): void {
+  const last = <T>(axis: T[]) => axis[axis.length - 1];
+  reach.massMinMjup = Math.max(reach.massMinMjup, row.massMjup[0]);
+  reach.massMaxMjup = Math.min(reach.massMaxMjup, last(row.massMjup));
+  reach.semiMajorAxisMinAu = Math.max(reach.semiMajorAxisMinAu, row.semiMajorAxisAu[0]);
+  reach.semiMajorAxisMaxAu = Math.min(reach.semiMajorAxisMaxAu, last(row.semiMajorAxisAu));
+}
+
+function shareCounter(population: Population, grid: MapGrid) {
+  const known = new Map<string, ReturnType<typeof weightsOn>>();
+  const weightsOn = (axes: MapGrid) => {
+    try {
+      return populationWeights(axes, population);
+    } catch (error) {
+      if (error instanceof RangeError) return null;
+      throw error;
+    }
+  };
+  const common = weightsOn(grid)?.shareOutsideMap ?? 1;
+  let outside = 0;
+  let flagged = 0;
+  let stars = 0;
+  return {
+    count(row: CompletenessMapRow): void {
+      const key = JSON.stringify([row.massMjup, row.semiMajorAxisAu]);
+      if (!known.has(key)) {
+        known.set(
+          key,
+          weightsOn({
+            massMjup: Float64Array.from(row.massMjup),
+            semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
+          }),
+        );
+      }
+      const weights = known.get(key);
+      stars++;
+      outside += Math.max(common, weights?.shareOutsideMap ?? 1);
+      if (!weights) return;
+      const masses = new Set(flaggedMasses(row));
+      row.massMjup.forEach((mass, i) => {
+        if (masses.has(mass)) flagged += weights.mass[i];
+      });
+    },
+    means: () => ({ shareOutsideMaps: outside / stars, shareFlaggedCooling: flagged / stars }),
+  };
+}

@@ -1,0 +1,69 @@
+import type { AgeLaw, DistanceLaw, StarInputs } from '@/lib/sensitivity';
+import type { ContrastCurveRow, TargetRow } from '@/models';
+
+/** Something that the computation needs and the tables do not hold, in a sentence for people. */
+export class MissingInput extends Error {}
+
+function ageOf(target: TargetRow): AgeLaw {
+  const { ageMyr, ageLowerMyr, ageUpperMyr, ageMinMyr, ageMaxMyr } = target;
+  const hasBounds = ageMinMyr !== null && ageMaxMyr !== null;
+  if (ageMyr === null && !hasBounds) throw new MissingInput('No age: a contrast curve needs one');
+  return {
+    // Uniform in log age between the bounds: their geometric mean is the median.
+    medianMyr: ageMyr ?? Math.sqrt((ageMinMyr as number) * (ageMaxMyr as number)),
+    ...(ageLowerMyr !== null && { lowerMyr: ageLowerMyr }),
+    ...(ageUpperMyr !== null && { upperMyr: ageUpperMyr }),
+    ...(ageMinMyr !== null && { minMyr: ageMinMyr }),
+    ...(ageMaxMyr !== null && { maxMyr: ageMaxMyr }),
+  };
+}
+
+function distanceOf(target: TargetRow): DistanceLaw {
+  if (target.distancePc !== null) {
+    return { distancePc: target.distancePc, errorPc: target.distanceErrorPc ?? 0 };
+  }
+  if (target.parallaxMas !== null) {
+    return { parallaxMas: target.parallaxMas, errorMas: target.parallaxErrorMas ?? 0 };
+  }
+  throw new MissingInput('No distance or parallax: a contrast curve needs one');
+}
+
+function hostMagOf(target: TargetRow, band: string): number {
+  const magnitude = target.magnitudes[band];
+  if (!magnitude) {
+    throw new MissingInput(`No magnitude of the star in ${band}, the band of its contrast curve`);
+  }
+  return magnitude.valueMag;
+}
+
+/** A target's curve with the entry whose magnitudes go with it. */
+export interface OwnCurve {
+  target: TargetRow;
+  curve: ContrastCurveRow;
+}
+
+/**
+ * What the engine needs of one star. Age and distance are those of the first entry; the curves are
+ * sorted by digest, so that the same inputs give the same bytes in whatever order they came in.
+ *
+ * @throws MissingInput naming what is not there
+ */
+export function buildStarInputs(target: TargetRow, ownCurves: OwnCurve[]): StarInputs {
+  const sorted = [...ownCurves].sort((a, b) => (a.curve.digest < b.curve.digest ? -1 : 1));
+  const hostMags = sorted.map(({ target: owner, curve }) => hostMagOf(owner, curve.band));
+  return {
+    name: target.name,
+    hostMag: hostMags[0],
+    hostMags,
+    ...(target.hostMassMsun !== null && { hostMassMsun: target.hostMassMsun }),
+    age: ageOf(target),
+    distance: distanceOf(target),
+    curves: sorted.map(({ curve }) => ({
+      separationArcsec: Float64Array.from(curve.separationArcsec),
+      contrastMag: Float64Array.from(curve.contrastMag),
+      nSigma: curve.nSigma,
+      band: curve.band,
+      ...(curve.coverage && { coverage: Float64Array.from(curve.coverage) }),
+    })),
+  };
+}
