@@ -58,6 +58,8 @@ export interface IntegratedDensity {
 const RESOLVED = 1e-12;
 /** ln of the share of the whole below which a panel is not refined. */
 const NEGLIGIBLE = Math.log(1e-17);
+/** Sixteen units in the last place. */
+const ROUNDING = 16 * Number.EPSILON;
 const MAX_PANELS = 3000;
 
 function evaluatePanel(stretches: Stretch[], stretch: number, start: number, width: number): Panel {
@@ -75,7 +77,7 @@ function evaluatePanel(stretches: Stretch[], stretch: number, start: number, wid
   return { stretch, start, width, peak, values, series: coefficients(values) };
 }
 
-function isResolved({ peak, width, series }: Panel, logBest: number): boolean {
+function isResolved({ start, peak, width, series }: Panel, logBest: number): boolean {
   const logShare = peak + Math.log(width) - logBest;
   if (!(logShare >= NEGLIGIBLE)) return true;
   let largest = 0;
@@ -85,7 +87,10 @@ function isResolved({ peak, width, series }: Panel, logBest: number): boolean {
     Math.abs(series[NODES - 2]),
     Math.abs(series[NODES - 3]),
   );
-  return tail <= RESOLVED * largest || Math.log(tail) + logShare < NEGLIGIBLE;
+  // A short panel far from v = 0 has nodes rounded by this much of its width: no series beats that.
+  const rounding = (ROUNDING * (start + width)) / width;
+  const isExhausted = tail <= Math.max(RESOLVED, rounding) * largest;
+  return isExhausted || Math.log(tail) + logShare < NEGLIGIBLE;
 }
 
 /** Halves panels, breadth first, until each one's Chebyshev series has run out. */
