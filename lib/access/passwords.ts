@@ -9,7 +9,7 @@ const LOWEST_SCORE = 3;
 /** A shorter part of a name stands in too many innocent words. */
 const SHORTEST_NAME_PART = 4;
 
-/** argon2id (the package's own choice), 19 MiB, two passes, one lane: the advice of the OWASP password storage guide. */
+/** argon2id is the package's own choice; 19 MiB and two passes are OWASP's first advice. */
 const COST = { memoryCost: 19 * 1024, timeCost: 2, parallelism: 1 };
 
 /** One form for what looks the same on another keyboard; nothing is cut. */

@@ -23,7 +23,7 @@ const RESERVED = new Set([
     'me',
   ],
   ...['new', 'password', 'people', 'public', 'r', 'release', 'releases', 'settings', 'sign-in'],
-  ...['sign-out', 'sign-up', 'start', 'static', 'tokens'],
+  ...['sign-out', 'sign-up', 'start', 'static', 'tokens', 'welcome'],
 ]);
 
 /** One sentence for a reserved word and for a taken one: it does not say who has it. */
