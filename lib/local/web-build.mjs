@@ -45,7 +45,7 @@ export async function buildWeb(/** @type {string} */ folder) {
   // Without an address of a database: a page that reads it while being built would freeze its rows.
   const { DATABASE_URL: _, ...environment } = process.env;
   const { code, output } = await run(process.execPath, [nextProgram, 'build'], {
-    env: { ...environment, NODE_ENV: 'production', ...nextEnvironment(folder) },
+    env: { ...environment, NODE_ENV: 'production', NO_COLOR: '1', ...nextEnvironment(folder) },
   });
   if (code !== 0) throw new LauncherProblem(`The web part could not be built:\n${output.trim()}`);
   writeFileSync(markOf(folder), `${wanted}\n`);
