@@ -1,4 +1,4 @@
-import { fitPrior } from '@/components/analyses/prior-choice';
+import { counterpart } from '@/components/analyses/prior-choice';
 import {
   type RateCurve,
   rateAxisMax,
@@ -114,7 +114,7 @@ export function savedAnswer(answer: RateAnswer): LimitAnswer {
       density: Float64Array.from(curve.density),
       cumulative: Float64Array.from(curve.cumulative),
     },
-    prior: Float64Array.from(curve.prior),
+    prior: Float64Array.from(curve.value, (_, point) => curve.prior[point] ?? Number.NaN),
   };
 }
 
@@ -130,7 +130,11 @@ function tableOfLevels(
   none: Answer,
 ): RunResult['levels'] {
   const likelihood = otherLikelihood[asked.likelihood];
-  const other = { ...asked, likelihood, prior: fitPrior(asked.prior, likelihood) };
+  const prior = counterpart(asked.prior, likelihood);
+  const other = (detections: AnswerSettings['detections']) =>
+    prior === null
+      ? null
+      : orNull(() => answerFromView(view, { ...asked, likelihood, prior, detections }));
   const levels = TABLE_LEVELS.some((level) => Math.abs(level - asked.level) < 1e-9)
     ? [...TABLE_LEVELS]
     : [...TABLE_LEVELS, asked.level].sort((a, b) => a - b);
@@ -140,10 +144,8 @@ function tableOfLevels(
     );
   const own = column(full.posterior);
   const ownZero = column(none.posterior);
-  const theirs = column(orNull(() => answerFromView(view, other))?.posterior);
-  const theirsZero = column(
-    orNull(() => answerFromView(view, { ...other, detections: [] }))?.posterior,
-  );
+  const theirs = column(other(asked.detections)?.posterior);
+  const theirsZero = column(other([])?.posterior);
   const isFraction = asked.likelihood === 'host-fraction';
   return levels.map((level, row) => ({
     level,

@@ -1,0 +1,276 @@
+'use client';
+
+import { type ReactNode, useState } from 'react';
+import { NumberEntry } from '@/components/analyses/number-entry';
+import {
+  fitPrior,
+  likelihoodOptions,
+  priorLaws,
+  priorOfLaw,
+  priorOptions,
+} from '@/components/analyses/prior-choice';
+import { RangeControl } from '@/components/charts/range-control';
+import { TraceSlider } from '@/components/charts/trace-slider';
+import { AxisRange, formatIndex, MassRange } from '@/components/populations/law-notation';
+import { Console } from '@/components/ui/console';
+import { ConsequenceSwitch, type SwitchOption } from '@/components/ui/consequence-switch';
+import { TextAction } from '@/components/ui/text-action';
+import { describeLevel, type RateQuantity } from '@/lib/inference';
+import { fromLogIndex, toLogIndex } from '@/lib/population';
+import { formatPercent, formatSignificant } from '@/lib/quantities/display';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { MapGrid } from '@/lib/sensitivity';
+import { type LiveSetting, tidy } from './live-setting';
+import { type Consequences, TRACK, trackOf } from './use-live-result';
+
+interface ResultConsoleProps {
+  setting: LiveSetting;
+  saved: LiveSetting;
+  quantity: RateQuantity;
+  grid: MapGrid;
+  /** Undefined until the maps of the run are there. */
+  consequences?: Consequences;
+  profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
+  /** "2 vetted": what counting them means here. */
+  countedLabel: string;
+  onSetting(setting: LiveSetting): void;
+}
+
+/** Ranges, indices and level over their consequences, then the switches that carry theirs. */
+export function ResultConsole(props: ResultConsoleProps) {
+  const { setting, saved, quantity, grid, consequences, profiles, countedLabel, onSetting } = props;
+  const [isFull, setFull] = useState(false);
+  const { definition } = setting;
+  const further = isFull ? '' : 'max-md:hidden';
+  const redefine = (changes: Partial<PopulationDefinition>) =>
+    onSetting({ ...setting, definition: { ...definition, ...changes } });
+  const limit = (value: number) =>
+    Number.isFinite(value)
+      ? quantity === 'host_fraction'
+        ? formatPercent(value)
+        : formatSignificant(100 * value, 2)
+      : 'no limit';
+  const consequence = (value: number | undefined) =>
+    value === undefined ? undefined : formatSignificant(100 * value, 2);
+  const levelWords = `at ${describeLevel(setting.credibleLevel).replace('\u2009%', ' per cent')}`;
+
+  const index = (
+    field: 'massIndex' | 'semiMajorAxisIndex',
+    names: { name: string; symbol: string; label: ReactNode },
+  ) => {
+    const value = tidy(fromLogIndex(definition[field], 'linear'));
+    const savedValue = tidy(fromLogIndex(saved.definition[field], 'linear'));
+    const [min, max] = trackOf(TRACK[field], value, savedValue);
+    const trace = consequences?.[field];
+    return (
+      <TraceSlider
+        {...names}
+        trace={trace && asTrace(trace)}
+        value={value}
+        savedValue={savedValue}
+        min={min}
+        max={max}
+        step={0.05}
+        onChange={(next) => redefine({ [field]: tidy(toLogIndex(next, 'linear'), 9) })}
+        formatLimit={limit}
+        formatValue={formatIndex}
+        levelWords={levelWords}
+      />
+    );
+  };
+  const [levelMin, levelMax] = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
+  const laws = [...new Set([...priorLaws(setting.likelihood), setting.prior.law])];
+
+  return (
+    <Console
+      foot={
+        <>
+          <ConsequenceSwitch
+            label="Detections counted"
+            value={setting.detections}
+            onChange={(detections) => onSetting({ ...setting, detections })}
+            options={[
+              {
+                value: 'counted',
+                label: countedLabel,
+                consequence: consequence(consequences?.switches.detections.counted),
+              },
+              {
+                value: 'none',
+                label: 'none',
+                consequence: consequence(consequences?.switches.detections.none),
+              },
+            ]}
+          />
+          <ConsequenceSwitch
+            label="Likelihood"
+            value={setting.likelihood}
+            onChange={(likelihood) =>
+              onSetting({ ...setting, likelihood, prior: fitPrior(setting.prior, likelihood) })
+            }
+            options={withConsequences(likelihoodOptions, (value) =>
+              consequence(consequences?.switches.likelihood[value]),
+            )}
+          />
+          <div className={`max-md:w-full ${further}`}>
+            <ConsequenceSwitch
+              label={
+                quantity === 'host_fraction' ? (
+                  <>
+                    Prior on <i>f</i>
+                  </>
+                ) : (
+                  'Prior on the mean number'
+                )
+              }
+              value={setting.prior.law}
+              onChange={(law) =>
+                onSetting({
+                  ...setting,
+                  prior: priorOfLaw(law, setting.likelihood, setting.prior),
+                })
+              }
+              options={withConsequences(priorOptions(laws), (value) =>
+                consequence(consequences?.switches.prior[value]),
+              )}
+            />
+          </div>
+          {setting.prior.law === 'log-uniform' && (
+            <div className={`w-28 ${further}`}>
+              <FloorEntry setting={setting} onSetting={onSetting} />
+            </div>
+          )}
+          <p className="ml-auto max-w-[170px] text-right text-chart text-ink3 leading-[1.3] max-md:hidden">
+            Each choice carries the limit it would give,{' '}
+            {quantity === 'host_fraction' ? 'in %' : 'in planets per 100 stars'}
+          </p>
+          <TextAction
+            className="mx-auto font-semibold md:hidden"
+            icon="down"
+            aria-expanded={isFull}
+            onClick={() => setFull(!isFull)}
+          >
+            {isFull ? 'Fewer controls' : '4 more controls'}
+          </TextAction>
+        </>
+      }
+    >
+      <ControlCell className={further}>
+        <RangeControl
+          name="Planet mass"
+          valueLabel={<MassRange definition={definition} />}
+          unitWords="Jupiter masses"
+          value={[definition.massMinMjup, definition.massMaxMjup]}
+          bounds={boundsOf(grid.massMjup, definition.massMinMjup, definition.massMaxMjup)}
+          onChange={([massMinMjup, massMaxMjup]) => redefine({ massMinMjup, massMaxMjup })}
+          profile={profiles && { at: grid.massMjup, height: profiles.mass }}
+        />
+      </ControlCell>
+      <ControlCell>
+        <RangeControl
+          name="Semi-major axis"
+          valueLabel={<AxisRange definition={definition} />}
+          unitWords="AU"
+          value={[definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu]}
+          bounds={boundsOf(
+            grid.semiMajorAxisAu,
+            definition.semiMajorAxisMinAu,
+            definition.semiMajorAxisMaxAu,
+          )}
+          onChange={([semiMajorAxisMinAu, semiMajorAxisMaxAu]) =>
+            redefine({ semiMajorAxisMinAu, semiMajorAxisMaxAu })
+          }
+          profile={profiles && { at: grid.semiMajorAxisAu, height: profiles.semiMajorAxis }}
+        />
+      </ControlCell>
+      <ControlCell>
+        {index('massIndex', {
+          name: 'Mass index',
+          symbol: 'α',
+          label: (
+            <>
+              Mass index <i>α</i>
+            </>
+          ),
+        })}
+      </ControlCell>
+      <ControlCell className={further}>
+        {index('semiMajorAxisIndex', {
+          name: 'Semi-major-axis index',
+          symbol: 'β',
+          label: (
+            <>
+              Axis index <i>β</i>
+            </>
+          ),
+        })}
+      </ControlCell>
+      <ControlCell className={further}>
+        <TraceSlider
+          name="Credible level"
+          trace={consequences && asTrace(percent(consequences.level))}
+          value={tidy(100 * setting.credibleLevel)}
+          savedValue={tidy(100 * saved.credibleLevel)}
+          min={100 * levelMin}
+          max={100 * levelMax}
+          step={0.5}
+          ticks={[50, 68, 80, 95]}
+          onChange={(next) => onSetting({ ...setting, credibleLevel: tidy(next / 100) })}
+          formatLimit={limit}
+          formatValue={(value) => describeLevel(value / 100)}
+        />
+      </ControlCell>
+    </Console>
+  );
+}
+
+/** A cell without a head of its own: the controls bring theirs. */
+function ControlCell({ className = '', children }: { className?: string; children: ReactNode }) {
+  return (
+    <div
+      className={`min-w-0 border-rule md:px-4 xl:border-l xl:first:border-l-0 md:max-xl:not-[:nth-child(3n+1)]:border-l xl:first:pl-0 md:max-xl:[:nth-child(3n+1)]:pl-0 xl:last:pr-0 ${className}`}
+    >
+      {children}
+    </div>
+  );
+}
+
+function FloorEntry({
+  setting,
+  onSetting,
+}: {
+  setting: LiveSetting;
+  onSetting(setting: LiveSetting): void;
+}) {
+  const { prior } = setting;
+  if (prior.law !== 'log-uniform') return null;
+  return (
+    <NumberEntry
+      label="Floor"
+      value={prior.min}
+      isAllowed={(min) => min > 0 && min < prior.max}
+      expected={`Above 0, below ${prior.max}.`}
+      onValue={(min) => onSetting({ ...setting, prior: { ...prior, min } })}
+    />
+  );
+}
+
+/** The axis of a control is the map's own, unless the range reaches past it. */
+function boundsOf(nodes: Float64Array, min: number, max: number): [number, number] {
+  return [Math.min(nodes[0], min), Math.max(nodes[nodes.length - 1], max)];
+}
+
+function asTrace({ values, limits }: { values: number[]; limits: number[] }) {
+  return { parameter: Float64Array.from(values), limit: Float64Array.from(limits) };
+}
+
+function percent({ values, limits }: { values: number[]; limits: number[] }) {
+  return { values: values.map((level) => 100 * level), limits };
+}
+
+function withConsequences<Value extends string>(
+  options: SwitchOption<Value>[],
+  of: (value: Value) => string | undefined,
+): SwitchOption<Value>[] {
+  return options.map((option) => ({ ...option, consequence: of(option.value) }));
+}

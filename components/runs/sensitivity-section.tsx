@@ -1,0 +1,58 @@
+'use client';
+
+import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
+import { DepthChart, type DepthSeries } from '@/components/charts/depth-chart';
+import type { MapDetection } from '@/components/charts/detection-marks';
+import type { MapData } from '@/components/charts/map-contours';
+import { RampKey } from '@/components/charts/ramp-key';
+import { FoldSection } from '@/components/ui/fold-section';
+import { formatSignificant } from '@/lib/quantities/display';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { DetectionView } from '@/lib/schemas/runs';
+
+interface SensitivitySectionProps {
+  map: MapData;
+  stars: number;
+  exposure: number;
+  depth: DepthSeries[];
+  definition: PopulationDefinition;
+  companions: DetectionView[];
+  onDefinition(definition: PopulationDefinition): void;
+}
+
+/** Depth of search by survey over the mean map, on one axis; the range is dragged in the map. */
+export function SensitivitySection(props: SensitivitySectionProps) {
+  const { map, stars, exposure, depth, definition, companions, onDefinition } = props;
+  return (
+    <FoldSection
+      number={2}
+      title="Sensitivity"
+      answer={`${formatSignificant(exposure, 3)} stars’ worth of detection probability`}
+      tools={<RampKey label={`mean detection probability, ${stars} stars`} />}
+    >
+      <div className="grid gap-1">
+        <DepthChart semiMajorAxisAu={map.semiMajorAxisAu} series={depth} range={definition} />
+        <CompletenessMapChart
+          map={map}
+          subject={`mean detection probability, ${stars} stars`}
+          range={definition}
+          onRangeChange={(range) => onDefinition({ ...definition, ...range })}
+          detections={companions.map(asMark)}
+        />
+      </div>
+    </FoldSection>
+  );
+}
+
+/** A companion as the map marks it; unequal errors are drawn by their mean. */
+export function asMark(companion: DetectionView): MapDetection {
+  const mean = (errors: [number, number] | null) =>
+    errors === null ? undefined : (Math.abs(errors[0]) + Math.abs(errors[1])) / 2;
+  return {
+    name: companion.name,
+    massMjup: companion.massMjup,
+    massErrorMjup: mean(companion.massErrorsMjup),
+    semiMajorAxisAu: companion.semiMajorAxisAu,
+    semiMajorAxisErrorAu: mean(companion.semiMajorAxisErrorsAu),
+  };
+}
