@@ -107,7 +107,11 @@ export function regridCells(
     insideShare(map.massEdgesMjup, massEdgesMjup) *
     insideShare(map.semiMajorAxisEdgesAu, semiMajorAxisEdgesAu);
   return {
-    map: { massEdgesMjup, semiMajorAxisEdgesAu, completeness },
+    map: {
+      massEdgesMjup: Float64Array.from(massEdgesMjup),
+      semiMajorAxisEdgesAu: Float64Array.from(semiMajorAxisEdgesAu),
+      completeness,
+    },
     shareOutside: 1 - inside,
   };
 }

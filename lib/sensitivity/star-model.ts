@@ -50,7 +50,7 @@ export function prepareStar(
   settings: SensitivitySettings,
 ): PreparedStar {
   const hostMags = apparentMags(star);
-  const ages = ageNodes(star.age, settings.threshold);
+  const ages = ageNodes(star.age, settings.threshold, settings.ageNodesPerSide);
   const distances = distanceNodes(star.distance);
   const extinctionMag = star.extinctionMag ?? 0;
   if (!Number.isFinite(extinctionMag)) {

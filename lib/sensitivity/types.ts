@@ -80,6 +80,8 @@ export interface SensitivitySettings {
   /** What a mass outside the cooling table means: never detected, or the edge value above the table. */
   massOutsideTable: 'undetectable' | 'edge';
   ageOutsideTable: 'refuse' | 'edge';
+  /** Age nodes on each side of the median; default 5 under the smooth threshold, 10 under the hard. */
+  ageNodesPerSide?: number;
 }
 
 /** Where a map rests on the edge of its cooling relation, or beyond it. */
