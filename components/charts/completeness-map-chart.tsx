@@ -1,0 +1,206 @@
+'use client';
+
+import { useId, useMemo } from 'react';
+import { formatPercent, formatPlain, formatRange } from '@/lib/quantities/display';
+import { ChartFigure, type ChartTable } from './chart-figure';
+import { DetectionMarks, type MapDetection } from './detection-marks';
+import type { Box, MapData } from './map-contours';
+import { ContourNumbers, contourLabels, MapAxes, MapBands, mapFrame } from './map-layers';
+import { type MapRange, RangeHandles } from './range-box';
+import { useWidth } from './use-width';
+
+export interface CompletenessMapChartProps {
+  map: MapData;
+  /** What the map is of: "mean detection probability, 287 stars". */
+  subject: string;
+  range?: MapRange;
+  /** Given, the box has handles. `isSettled` is false while one is being dragged. */
+  onRangeChange?(range: MapRange, isSettled: boolean): void;
+  detections?: MapDetection[];
+  height?: number;
+}
+
+const none: MapDetection[] = [];
+
+/** Left and right edges that a chart above the map shares with it. */
+export const mapMargin: Box = { left: 46, right: 16, top: 8, bottom: 46 };
+
+/** Probability of detection in bands of 5 %, with contours, the range in question and detections. */
+export function CompletenessMapChart(props: CompletenessMapChartProps) {
+  const { map, subject, range, onRangeChange, detections = none, height } = props;
+  const [measure, width] = useWidth<HTMLDivElement>(760);
+  const clipId = useId();
+  const total = height ?? (width < 520 ? 300 : 350);
+  const frame = useMemo(() => mapFrame(map, width, total, mapMargin), [map, width, total]);
+  const box = range ? rangePx(range, frame) : undefined;
+  const marks = box && onRangeChange ? handleBoxes(box) : [];
+  const numbers = useMemo(() => {
+    const dots = detections.map(({ semiMajorAxisAu, massMjup }) =>
+      around(frame.x(semiMajorAxisAu), frame.y(massMjup), 9),
+    );
+    return contourLabels(map, frame, range ? rangePx(range, frame) : frame, dots);
+  }, [map, frame, range, detections]);
+  const sentence = useMemo(
+    () => mapSentence(map, subject, range, detections),
+    [map, subject, range, detections],
+  );
+
+  return (
+    <ChartFigure
+      label={sentence}
+      width={width}
+      height={total}
+      measure={measure}
+      tables={() => mapTables(map, subject, detections)}
+      overlay={
+        range &&
+        onRangeChange && (
+          <RangeHandles
+            frame={frame}
+            width={width}
+            height={total}
+            range={range}
+            bounds={mapEnds(map)}
+            onChange={onRangeChange}
+          />
+        )
+      }
+    >
+      <clipPath id={clipId}>
+        <rect
+          x={frame.left}
+          y={frame.top}
+          width={frame.right - frame.left}
+          height={frame.bottom - frame.top}
+        />
+      </clipPath>
+      <g clipPath={`url(#${clipId})`}>
+        <MapBands map={map} width={width} height={total} margin={mapMargin} />
+        {box && (
+          <>
+            <path
+              className="veil"
+              fillRule="evenodd"
+              d={`M${frame.left},${frame.top}H${frame.right}V${frame.bottom}H${frame.left}ZM${box.left},${box.top}V${box.bottom}H${box.right}V${box.top}Z`}
+            />
+            {['range-edge', 'range-box'].map((edge) => (
+              <rect
+                key={edge}
+                className={edge}
+                x={box.left}
+                y={box.top}
+                width={box.right - box.left}
+                height={box.bottom - box.top}
+              />
+            ))}
+          </>
+        )}
+      </g>
+      <ContourNumbers places={numbers} />
+      <DetectionMarks
+        detections={detections}
+        frame={frame}
+        taken={[...numbers.map((place) => place.box), ...marks]}
+      />
+      <MapAxes map={map} frame={frame} />
+    </ChartFigure>
+  );
+}
+
+function around(x: number, y: number, reach: number): Box {
+  return { left: x - reach, right: x + reach, top: y - reach, bottom: y + reach };
+}
+
+function handleBoxes(box: Box): Box[] {
+  const [x, y] = [(box.left + box.right) / 2, (box.top + box.bottom) / 2];
+  return [
+    around(box.left, y, 12),
+    around(box.right, y, 12),
+    around(x, box.top, 12),
+    around(x, box.bottom, 12),
+  ];
+}
+
+function rangePx(range: MapRange, frame: ReturnType<typeof mapFrame>): Box {
+  return {
+    left: frame.x(range.semiMajorAxisMinAu),
+    right: frame.x(range.semiMajorAxisMaxAu),
+    top: frame.y(range.massMaxMjup),
+    bottom: frame.y(range.massMinMjup),
+  };
+}
+
+function mapEnds({ massMjup, semiMajorAxisAu }: MapData): MapRange {
+  return {
+    massMinMjup: massMjup[0],
+    massMaxMjup: massMjup[massMjup.length - 1],
+    semiMajorAxisMinAu: semiMajorAxisAu[0],
+    semiMajorAxisMaxAu: semiMajorAxisAu[semiMajorAxisAu.length - 1],
+  };
+}
+
+function mapSentence(
+  map: MapData,
+  subject: string,
+  range: MapRange | undefined,
+  detections: MapDetection[],
+): string {
+  let best = 0;
+  for (let index = 1; index < map.completeness.length; index += 1) {
+    if (map.completeness[index] > map.completeness[best]) best = index;
+  }
+  const columns = map.semiMajorAxisAu.length;
+  const mass = map.massMjup[Math.floor(best / columns)];
+  const axis = map.semiMajorAxisAu[best % columns];
+  const parts = [
+    `Map of ${subject} over semi-major axis and planet mass: highest ${formatPercent(map.completeness[best])} at ${formatPlain(mass, 2)} Jupiter masses and ${formatPlain(axis, 2)} AU`,
+    range &&
+      `range ${formatRange(range.massMinMjup, range.massMaxMjup, 'Jupiter masses')} at ${formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}`,
+    detections.length > 0 && `detections: ${detections.map(({ name }) => name).join(', ')}`,
+  ];
+  return parts.filter(Boolean).join('; ');
+}
+
+const readMasses = 8;
+const readAxes = 8;
+
+/** The map at 8 by 8 of its nodes, which is what can be read; exports carry all of them. */
+export function mapTables(map: MapData, subject: string, detections: MapDetection[]): ChartTable[] {
+  const pick = (values: Float64Array, count: number) =>
+    Array.from({ length: Math.min(count, values.length) }, (_, index) =>
+      Math.round((index * (values.length - 1)) / (Math.min(count, values.length) - 1)),
+    );
+  const columns = pick(map.semiMajorAxisAu, readAxes);
+  const rows = pick(map.massMjup, readMasses).reverse();
+  const tables: ChartTable[] = [
+    {
+      caption: `${subject}, per cent; rows: planet mass, columns: semi-major axis`,
+      columns: [
+        'mass, Jupiter masses',
+        ...columns.map((index) => `${formatPlain(map.semiMajorAxisAu[index], 3)} AU`),
+      ],
+      rows: rows.map((row) => [
+        formatPlain(map.massMjup[row], 3),
+        ...columns.map((column) =>
+          (100 * map.completeness[row * map.semiMajorAxisAu.length + column]).toFixed(1),
+        ),
+      ]),
+    },
+  ];
+  if (detections.length > 0) {
+    tables.push({
+      caption: 'Detections',
+      columns: ['name', 'mass, Jupiter masses', 'semi-major axis, AU'],
+      rows: detections.map((it) => [
+        it.name,
+        withError(it.massMjup, it.massErrorMjup),
+        withError(it.semiMajorAxisAu, it.semiMajorAxisErrorAu),
+      ]),
+    });
+  }
+  return tables;
+}
+
+function withError(value: number, error: number | undefined): string {
+  return error === undefined ? formatPlain(value) : `${formatPlain(value)} ± ${formatPlain(error)}`;
+}

@@ -1,0 +1,93 @@
+import { type Box, boxesMeet } from './map-contours';
+import type { MapFrame } from './map-layers';
+import { textWidth } from './text-width';
+
+export interface MapDetection {
+  name: string;
+  massMjup: number;
+  massErrorMjup?: number;
+  semiMajorAxisAu: number;
+  semiMajorAxisErrorAu?: number;
+}
+
+/** White dots with error bars and names; a name takes the first free place around its dot. */
+export function DetectionMarks({
+  detections,
+  frame,
+  taken,
+}: {
+  detections: MapDetection[];
+  frame: MapFrame;
+  taken: Box[];
+}) {
+  const occupied = [...taken];
+  return detections.map((detection) => {
+    const x = frame.x(detection.semiMajorAxisAu);
+    const y = frame.y(detection.massMjup);
+    const place = freePlace(detection.name, x, y, frame, occupied);
+    occupied.push(place.box, { left: x - 8, right: x + 8, top: y - 8, bottom: y + 8 });
+    return (
+      <g key={detection.name} className="detection">
+        {detection.semiMajorAxisErrorAu !== undefined && (
+          <line
+            x1={bar(
+              frame.x,
+              detection.semiMajorAxisAu,
+              -detection.semiMajorAxisErrorAu,
+              frame.left,
+            )}
+            x2={bar(
+              frame.x,
+              detection.semiMajorAxisAu,
+              detection.semiMajorAxisErrorAu,
+              frame.right,
+            )}
+            y1={y}
+            y2={y}
+          />
+        )}
+        {detection.massErrorMjup !== undefined && (
+          <line
+            y1={bar(frame.y, detection.massMjup, -detection.massErrorMjup, frame.bottom)}
+            y2={bar(frame.y, detection.massMjup, detection.massErrorMjup, frame.top)}
+            x1={x}
+            x2={x}
+          />
+        )}
+        <circle cx={x} cy={y} r="5" />
+        <text className="halo" x={place.x} y={place.y} textAnchor={place.anchor}>
+          {detection.name}
+        </text>
+      </g>
+    );
+  });
+}
+
+/** End of an error bar; one that reaches zero on a logarithmic axis runs to its edge. */
+function bar(scale: (value: number) => number, value: number, error: number, edge: number) {
+  return value + error > 0 ? scale(value + error) : edge;
+}
+
+function freePlace(name: string, x: number, y: number, frame: Box, occupied: Box[]) {
+  const width = textWidth(name, 13.5);
+  const places = [
+    { x, y: y + 24, anchor: 'middle' as const, left: x - width / 2 },
+    { x: x - 10, y: y - 11, anchor: 'end' as const, left: x - 10 - width },
+    { x: x + 10, y: y - 11, anchor: 'start' as const, left: x + 10 },
+    { x, y: y - 16, anchor: 'middle' as const, left: x - width / 2 },
+    { x: x + 12, y: y + 18, anchor: 'start' as const, left: x + 12 },
+  ].map((place) => ({
+    ...place,
+    box: { left: place.left, right: place.left + width, top: place.y - 13, bottom: place.y + 4 },
+  }));
+  return (
+    places.find(
+      ({ box }) =>
+        box.left > frame.left &&
+        box.right < frame.right &&
+        box.top > frame.top &&
+        box.bottom < frame.bottom &&
+        !occupied.some((other) => boxesMeet(box, other)),
+    ) ?? places[0]
+  );
+}

@@ -1,0 +1,256 @@
+'use client';
+
+import { scaleLinear } from 'd3';
+import { type KeyboardEvent, type ReactNode, useId, useRef, useState } from 'react';
+import { formatPlain } from '@/lib/quantities/display';
+import { BottomAxis } from './axes';
+import { areaPath, linePath, valueAt } from './paths';
+import { linearTicks } from './ticks';
+import { useWidth } from './use-width';
+
+export interface TraceSliderProps {
+  /** Plain name, for readers and for the number field: "Mass index". */
+  name: string;
+  /** The name as it is seen, where it holds a symbol. */
+  label?: ReactNode;
+  /** Short form in the spoken value: "β". */
+  symbol?: string;
+  /** The limit as a function of the parameter: the track. Undefined while it is being computed. */
+  trace?: { parameter: Float64Array; limit: Float64Array };
+  value: number;
+  /** Place of the stored state, shown as a hollow dot while the value differs from it. */
+  savedValue?: number;
+  min: number;
+  max: number;
+  step: number;
+  /** `isSettled` is false while the knob is being dragged. */
+  onChange(value: number, isSettled: boolean): void;
+  /** A limit in words for the eye: "6.6 %". */
+  formatLimit(limit: number): string;
+  /** Value as seen; a plain number unless given: "95 %", "+1 σ". */
+  formatValue?(value: number): string;
+  /** "at 95 per cent": the end of the spoken sentence. */
+  levelWords?: string;
+  /** Numbers under the track, where even steps would be wrong. */
+  ticks?: number[];
+}
+
+const height = 112;
+const track = { top: 18, bottom: 86, inset: 10 };
+
+/** What a screen reader says: "β 0.4, limit below 6.6 per cent at 95 per cent". */
+export function traceValueText(
+  props: Pick<
+    TraceSliderProps,
+    'name' | 'symbol' | 'value' | 'trace' | 'formatLimit' | 'formatValue' | 'levelWords'
+  >,
+): string {
+  const { name, symbol, value, trace, formatLimit, formatValue = formatPlain, levelWords } = props;
+  const head = `${symbol ?? name} ${formatValue(value)}`;
+  if (!trace) return head;
+  const limit = formatLimit(valueAt(trace.parameter, trace.limit, value))
+    .replace('\u2009', ' ')
+    .replace('%', 'per cent');
+  return `${head}, limit below ${limit}${levelWords ? ` ${levelWords}` : ''}`;
+}
+
+/** Keeps a typed or stepped value on the grid of steps and between the ends. */
+export function snapToStep(value: number, min: number, max: number, step: number): number {
+  const snapped = Math.round((value - min) / step) * step + min;
+  const decimals = Math.max(0, Math.ceil(-Math.log10(step)) + 1);
+  return Number(Math.min(max, Math.max(min, snapped)).toFixed(decimals));
+}
+
+/** A slider whose track is its consequence: the limit against the parameter. */
+export function TraceSlider(props: TraceSliderProps) {
+  const { name, label, trace, value, savedValue, min, max, step, onChange, formatLimit } = props;
+  const formatValue = props.formatValue ?? ((number: number) => formatPlain(number));
+  const [measure, width] = useWidth<HTMLDivElement>(188);
+  const [isDragging, setDragging] = useState(false);
+  const before = useRef(value);
+  const inputId = useId();
+  const x = scaleLinear([min, max], [track.inset, width - track.inset]);
+  const limits = trace ? Array.from(trace.limit).filter(Number.isFinite) : [];
+  const [low, high] = [Math.min(...limits), Math.max(...limits)];
+  const y = scaleLinear([0.45 * low, Math.max(high, low * 1.02)], [track.bottom, track.top]);
+  const at = (parameter: number) =>
+    trace ? y(valueAt(trace.parameter, trace.limit, parameter)) : (track.top + track.bottom) / 2;
+  const isMoved = savedValue !== undefined && Math.abs(savedValue - value) > step / 2;
+  const ticks =
+    props.ticks?.map((tick) => ({ value: tick, isMajor: true, label: formatPlain(tick) })) ??
+    linearTicks(min, max, width - 2 * track.inset, 40);
+
+  const press = (event: KeyboardEvent<HTMLInputElement>) => {
+    if (event.key === 'Escape') {
+      onChange(before.current, true);
+      return;
+    }
+    const direction = { ArrowRight: 1, ArrowUp: 1, ArrowLeft: -1, ArrowDown: -1 }[event.key];
+    if (direction === undefined || !event.shiftKey) return;
+    event.preventDefault();
+    onChange(snapToStep(value + 10 * direction * step, min, max, step), true);
+  };
+
+  return (
+    <div className="min-w-0">
+      <div className="flex items-baseline justify-between gap-2 whitespace-nowrap text-ink2 text-note">
+        <label htmlFor={inputId} className="truncate">
+          {label ?? name}
+        </label>
+        <NumberOnDemand {...props} formatValue={formatValue} />
+      </div>
+      <div ref={measure} className="chart-control relative">
+        <input
+          id={inputId}
+          className="range-native"
+          style={{
+            left: track.inset - 12,
+            width: width - 2 * track.inset + 24,
+            top: 4,
+            height: 90,
+          }}
+          type="range"
+          min={min}
+          max={max}
+          step={step}
+          value={value}
+          aria-valuetext={traceValueText({ ...props, formatValue })}
+          onFocus={() => {
+            before.current = value;
+          }}
+          onKeyDown={press}
+          onPointerDown={() => {
+            before.current = value;
+            setDragging(true);
+          }}
+          onPointerUp={() => {
+            setDragging(false);
+            onChange(value, true);
+          }}
+          onPointerCancel={() => setDragging(false)}
+          onChange={(event) => onChange(Number(event.target.value), !isDragging)}
+        />
+        <svg
+          className="chart pointer-events-none"
+          width="100%"
+          height={height}
+          viewBox={`0 0 ${width} ${height}`}
+          aria-hidden="true"
+        >
+          {trace ? (
+            <>
+              <path
+                className="track"
+                d={areaPath(trace.parameter, trace.limit, x, y, track.bottom)}
+              />
+              <path className="trace-line" d={linePath(trace.parameter, trace.limit, x, y)} />
+              <EndValues trace={trace} width={width} y={y} formatLimit={formatLimit} />
+            </>
+          ) : (
+            <rect
+              className="track"
+              x={track.inset}
+              y={track.top}
+              width={Math.max(0, width - 2 * track.inset)}
+              height={track.bottom - track.top}
+            />
+          )}
+          <BottomAxis
+            ticks={ticks}
+            scale={x}
+            y={track.bottom}
+            x0={track.inset}
+            x1={width - track.inset}
+          />
+          {isMoved && (
+            <>
+              <line
+                className="saved-stem"
+                x1={x(savedValue)}
+                x2={x(savedValue)}
+                y1={at(savedValue)}
+                y2={track.bottom}
+              />
+              <circle className="saved-dot" cx={x(savedValue)} cy={at(savedValue)} r="4" />
+            </>
+          )}
+          <line className="stem" x1={x(value)} x2={x(value)} y1={at(value)} y2={track.bottom} />
+          <circle
+            className={isDragging ? 'knob knob-drag' : 'knob'}
+            cx={x(value)}
+            cy={at(value)}
+            r={isDragging ? 10 : 7}
+          />
+        </svg>
+      </div>
+    </div>
+  );
+}
+
+function EndValues({
+  trace,
+  width,
+  y,
+  formatLimit,
+}: {
+  trace: NonNullable<TraceSliderProps['trace']>;
+  width: number;
+  y(limit: number): number;
+  formatLimit(limit: number): string;
+}) {
+  const last = trace.limit.length - 1;
+  return (
+    <>
+      <text className="quiet" x={track.inset} y={Math.max(11, y(trace.limit[0]) - 7)}>
+        {formatLimit(trace.limit[0])}
+      </text>
+      <text
+        className="quiet"
+        x={width - track.inset}
+        y={Math.max(11, y(trace.limit[last]) - 7)}
+        textAnchor="end"
+      >
+        {formatLimit(trace.limit[last])}
+      </text>
+    </>
+  );
+}
+
+/** The value above the track; pressed, it becomes a field for an exact number. */
+function NumberOnDemand(props: TraceSliderProps & { formatValue(value: number): string }) {
+  const { name, value, min, max, step, onChange, formatValue } = props;
+  const [isOpen, setOpen] = useState(false);
+  if (!isOpen) {
+    return (
+      <button
+        type="button"
+        className="shrink-0 font-semibold text-ink text-value"
+        aria-label={`${name} ${formatValue(value)}, enter a number`}
+        onClick={() => setOpen(true)}
+      >
+        {formatValue(value)}
+      </button>
+    );
+  }
+  const commit = (text: string) => {
+    const number = Number(text.replace('−', '-').replace(',', '.'));
+    if (text.trim() !== '' && Number.isFinite(number)) {
+      onChange(snapToStep(number, min, max, step), true);
+    }
+    setOpen(false);
+  };
+  return (
+    <input
+      ref={(element) => element?.select()}
+      className="w-16 shrink-0 rounded border border-rule2 bg-surface px-1 text-right font-semibold text-ink"
+      aria-label={`${name}, ${formatPlain(min)} to ${formatPlain(max)}`}
+      inputMode="decimal"
+      defaultValue={String(value)}
+      onBlur={(event) => commit(event.target.value)}
+      onKeyDown={(event) => {
+        if (event.key === 'Enter') commit(event.currentTarget.value);
+        if (event.key === 'Escape') setOpen(false);
+      }}
+    />
+  );
+}
