@@ -12,7 +12,7 @@ import {
   type UploadView,
   uploadSettingsSchema,
 } from '@/lib/schemas/uploads';
-import { BUILT_IN_BANDS } from '@/lib/sensitivity';
+import { BUILT_IN_LAW_BANDS } from '@/lib/sensitivity';
 import {
   CompletenessMapRow,
   CoolingTableRow,
@@ -43,7 +43,7 @@ interface Source {
 
 async function bandsOf(survey: SurveyRow): Promise<string[]> {
   const { cooling } = survey.mapSettings;
-  if (cooling.kind === 'built-in') return [...BUILT_IN_BANDS];
+  if (cooling.kind === 'built-in') return [...BUILT_IN_LAW_BANDS];
   const table = await CoolingTableRow.findByPk(cooling.coolingTableId);
   return table ? Object.keys(table.magnitudes) : [];
 }
@@ -200,7 +200,7 @@ async function surveyFor(
   slug: string | undefined,
 ): Promise<SurveyRow | null> {
   if (kind === 'cooling-tables') {
-    demand(actor, 'import', { isLead: true });
+    demand(actor, 'import-cooling-table');
     return null;
   }
   if (slug === undefined) {
@@ -300,7 +300,8 @@ export async function getUploadBytes(actor: Actor, id: string) {
 }
 
 function demandImport(actor: Actor, survey: SurveyRow | null): void {
-  demand(actor, 'import', { isLead: survey ? isLead(actor, survey) : true });
+  if (survey) demand(actor, 'import', { isLead: isLead(actor, survey) });
+  else demand(actor, 'import-cooling-table');
 }
 
 /** Reads the kept file again with other settings. */

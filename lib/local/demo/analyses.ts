@@ -62,7 +62,7 @@ export async function askQuestions({ actors, surveyIds, finish }: DemoAnalyses):
     true,
   );
 
-  const recipe = (population: PopulationView, ids: string[], prior = uniform) => ({
+  const recipe = (population: PopulationView, ids: string[], prior: RatePriorInput = uniform) => ({
     surveyIds: ids,
     populationId: population.id,
     likelihood: 'host-fraction' as const,

@@ -6,7 +6,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { may } from '@/lib/access/permissions';
 import { type Role, roleSchema } from '@/lib/schemas/common';
-import { listInvitations, rolesThatMayBeGiven } from '@/lib/services/invitations';
+import { listInvitations } from '@/lib/services/invitations';
 import { listMembers } from '@/lib/services/people';
 
 export const metadata: Metadata = { title: 'People' };
@@ -18,11 +18,12 @@ export default async function PeoplePage({
 }) {
   const actor = await currentActor((await params).collaboration);
   const { members } = await listMembers(actor);
-  const offered: readonly Role[] = roleSchema.options.filter((role) =>
-    rolesThatMayBeGiven(actor).includes(role),
-  );
-  const invitations =
-    may(actor, 'invite') || offered.length > 0 ? (await listInvitations(actor)).invitations : [];
+  const offered: readonly Role[] = may(actor, 'invite-any-role')
+    ? roleSchema.options
+    : may(actor, 'invite')
+      ? ['student']
+      : [];
+  const invitations = offered.length > 0 ? (await listInvitations(actor)).invitations : [];
   return (
     <>
       <PageTitle

@@ -6,13 +6,13 @@ import { JoinForm } from '@/components/people/join-form';
 import { LinkButton } from '@/components/ui/link-button';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
 import { LabError } from '@/lib/errors';
-import { getInvitationOffer } from '@/lib/services/invitations';
+import { getOffer } from '@/lib/services/invitations';
 
 export const metadata: Metadata = { title: 'Invitation' };
 
 async function findOffer(code: string) {
   try {
-    return await getInvitationOffer(code);
+    return await getOffer(code);
   } catch (error) {
     if (error instanceof LabError) return null;
     throw error;

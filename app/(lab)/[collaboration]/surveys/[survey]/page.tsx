@@ -1,0 +1,49 @@
+import type { Metadata } from 'next';
+import { notFound } from 'next/navigation';
+import { currentActor } from '@/app/session';
+import { SurveyScreen } from '@/components/surveys/survey-screen';
+import { NotFound } from '@/lib/errors';
+import { listCoolingTables } from '@/lib/services/cooling-tables';
+import { getSurvey } from '@/lib/services/surveys';
+import { listCompanions, listTargets } from '@/lib/services/targets';
+import { listUploads } from '@/lib/services/uploads';
+
+export const metadata: Metadata = { title: 'Survey' };
+
+const FIRST_PAGE = { limit: 500, offset: 0 };
+
+export default async function SurveyPage({
+  params,
+}: {
+  params: Promise<{ collaboration: string; survey: string }>;
+}) {
+  const { collaboration, survey: slug } = await params;
+  const actor = await currentActor(collaboration);
+  try {
+    const [survey, targets, companions, uploads, tables] = await Promise.all([
+      getSurvey(actor, slug),
+      listTargets(actor, slug, FIRST_PAGE),
+      listCompanions(actor, slug),
+      listUploads(actor, slug, { limit: 50, offset: 0 }),
+      listCoolingTables(actor),
+    ]);
+    const { cooling } = survey.mapSettings;
+    const coolingName =
+      cooling.kind === 'table'
+        ? (tables.find((table) => table.id === cooling.coolingTableId)?.name ?? null)
+        : null;
+    return (
+      <SurveyScreen
+        collaboration={actor.collaboration}
+        survey={survey}
+        targets={targets}
+        companions={companions}
+        uploads={uploads}
+        coolingName={coolingName}
+      />
+    );
+  } catch (error) {
+    if (error instanceof NotFound) notFound();
+    throw error;
+  }
+}

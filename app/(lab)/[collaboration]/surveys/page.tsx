@@ -1,0 +1,37 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { SurveyListPanel } from '@/components/surveys/survey-list';
+import { LinkButton } from '@/components/ui/link-button';
+import { PageTitle } from '@/components/ui/page-title';
+import { may } from '@/lib/access/permissions';
+import { listSurveys } from '@/lib/services/surveys';
+
+export const metadata: Metadata = { title: 'Surveys' };
+
+export default async function SurveysPage({
+  params,
+}: {
+  params: Promise<{ collaboration: string }>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const list = await listSurveys(actor);
+  const canAdd = may(actor, 'create-survey');
+  return (
+    <>
+      <PageTitle
+        title="Surveys"
+        context={`${list.entries} entries, ${list.stars} stars; a star in several surveys counts once`}
+        actions={
+          canAdd && (
+            <LinkButton href={`/${actor.collaboration}/surveys/new`} variant="primary" icon="add">
+              Add a survey
+            </LinkButton>
+          )
+        }
+      />
+      <div className="mt-6">
+        <SurveyListPanel collaboration={actor.collaboration} initial={list} canAdd={canAdd} />
+      </div>
+    </>
+  );
+}

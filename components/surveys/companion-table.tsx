@@ -1,0 +1,75 @@
+import { type StateKind, StateMark } from '@/components/ui/state-mark';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import type { CompanionView } from '@/lib/schemas/surveys';
+import { formatErrorPart, formatMeasured } from './measured';
+
+const marks: Record<CompanionView['status'], StateKind> = {
+  confirmed: 'ok',
+  candidate: 'warn',
+  ambiguous: 'warn',
+  background: 'stopped',
+};
+
+function withErrors(value: number | null, lower: number | null, upper: number | null): string {
+  if (value === null) return '–';
+  const text = formatMeasured(value, null);
+  if (lower === null || upper === null) return text;
+  if (lower === upper) return `${text} ± ${formatErrorPart(lower)}`;
+  return `${text} +${formatErrorPart(upper)} −${formatErrorPart(lower)}`;
+}
+
+/** Companions and candidates; only confirmed ones can be detections. */
+export function CompanionTable({ companions }: { companions: CompanionView[] }) {
+  if (companions.length === 0) {
+    return (
+      <p className="py-6 text-ink3">
+        No companion or candidate is listed. A companions file, even one without rows, states what
+        was found.
+      </p>
+    );
+  }
+  return (
+    <Table caption="Companions and candidates of the survey">
+      <TableHead>
+        <Row>
+          <HeadCell>companion</HeadCell>
+          <HeadCell>status</HeadCell>
+          <HeadCell isNumeric>
+            mass, M<sub>J</sub>
+          </HeadCell>
+          <HeadCell isNumeric>semi-major axis, AU</HeadCell>
+          <HeadCell isNumeric>probability of being bound</HeadCell>
+          <HeadCell>reference</HeadCell>
+        </Row>
+      </TableHead>
+      <TableBody>
+        {companions.map((companion) => (
+          <Row key={companion.id}>
+            <Cell isRowHead className="whitespace-nowrap">
+              {companion.target} {companion.name}
+            </Cell>
+            <Cell>
+              <StateMark kind={marks[companion.status]}>{companion.status}</StateMark>
+            </Cell>
+            <Cell isNumeric>
+              {withErrors(
+                companion.massMjup,
+                companion.massErrorLowerMjup,
+                companion.massErrorUpperMjup,
+              )}
+            </Cell>
+            <Cell isNumeric>
+              {withErrors(
+                companion.semiMajorAxisAu,
+                companion.semiMajorAxisErrorLowerAu,
+                companion.semiMajorAxisErrorUpperAu,
+              )}
+            </Cell>
+            <Cell isNumeric>{companion.probability ?? '–'}</Cell>
+            <Cell>{companion.reference ?? '–'}</Cell>
+          </Row>
+        ))}
+      </TableBody>
+    </Table>
+  );
+}

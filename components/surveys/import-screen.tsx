@@ -1,0 +1,180 @@
+'use client';
+
+import { useState } from 'react';
+import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
+import { sendUpload, storeUpload } from '@/components/hooks/use-uploads';
+import { Button } from '@/components/ui/button';
+import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
+import { FileDrop } from '@/components/ui/file-drop';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { SectionOpener } from '@/components/ui/section-opener';
+import type { SurveyView } from '@/lib/schemas/surveys';
+import type { UploadKindName, UploadSettings, UploadView } from '@/lib/schemas/uploads';
+import { FileCheck } from './file-check';
+import { fileKinds } from './file-kinds';
+
+/** One file on its way in: as it was given, what reading it said, and whether it is stored. */
+export interface IncomingEntry {
+  key: string;
+  file: File;
+  kind: UploadKindName;
+  settings: UploadSettings;
+  state: 'reading' | 'read' | 'refused' | 'storing' | 'stored';
+  upload: UploadView | null;
+  problem: ApiProblem | null;
+  /** Any other failure, as a sentence. */
+  failure: string | null;
+}
+
+/** Three steps on one page: files, check, store. Storing is one transaction a file. */
+export function ImportScreen({
+  collaboration,
+  survey,
+}: {
+  collaboration: string;
+  survey: SurveyView;
+}) {
+  const [kind, setKind] = useState<UploadKindName>(
+    survey.targets === 0 ? 'targets' : 'contrast-curves',
+  );
+  const [entries, setEntries] = useState<IncomingEntry[]>([]);
+  const change = (key: string, part: Partial<IncomingEntry>) =>
+    setEntries((all) => all.map((entry) => (entry.key === key ? { ...entry, ...part } : entry)));
+
+  const read = async (entry: IncomingEntry) => {
+    change(entry.key, { state: 'reading', problem: null, failure: null, settings: entry.settings });
+    try {
+      const upload = await sendUpload(collaboration, entry.file, {
+        kind: entry.kind,
+        survey: entry.kind === 'cooling-tables' ? undefined : survey.slug,
+        settings: entry.settings,
+      });
+      change(entry.key, { state: 'read', upload });
+    } catch (reason) {
+      const problem = reason instanceof ApiProblem ? reason : null;
+      change(entry.key, {
+        state: 'refused',
+        upload: null,
+        problem,
+        failure: problem ? null : sentenceOf(reason),
+      });
+    }
+  };
+
+  const take = async (files: File[]) => {
+    const fresh = files.map<IncomingEntry>((file, i) => ({
+      key: `${Date.now()}-${i}-${file.name}`,
+      file,
+      kind,
+      settings: {},
+      state: 'reading',
+      upload: null,
+      problem: null,
+      failure: null,
+    }));
+    setEntries((all) => [...all, ...fresh]);
+    for (const entry of fresh) await read(entry);
+  };
+
+  const store = async (entry: IncomingEntry) => {
+    if (!entry.upload) return;
+    change(entry.key, { state: 'storing', failure: null });
+    try {
+      change(entry.key, {
+        state: 'stored',
+        upload: await storeUpload(collaboration, entry.upload.id),
+      });
+    } catch (reason) {
+      change(entry.key, { state: 'read', failure: sentenceOf(reason) });
+    }
+  };
+
+  const ready = entries.filter((entry) => entry.state === 'read');
+  const stored = entries.filter((entry) => entry.state === 'stored');
+  const storeAll = async () => {
+    for (const entry of ready) await store(entry);
+  };
+  const needsTargets = survey.targets === 0 && kind !== 'targets' && kind !== 'cooling-tables';
+  return (
+    <div className="flex flex-col gap-10">
+      <section>
+        <SectionOpener
+          number={1}
+          title="Files"
+          context="CSV, one kind a file; a unit may stand in brackets after a column's name"
+        />
+        <div className="mb-4">
+          <ConsequenceSwitch<UploadKindName>
+            label="What the files hold"
+            value={kind}
+            onChange={setKind}
+            options={fileKinds.map((choice) => ({ value: choice.kind, label: choice.label }))}
+          />
+          <p className="mt-2 max-w-[72ch] text-[14px] text-ink3">
+            {fileKinds.find((choice) => choice.kind === kind)?.needs}
+          </p>
+        </div>
+        {needsTargets && stored.length === 0 && (
+          <Notice tone="warn" title="This survey has no targets yet.">
+            Import the file of targets first: every other line is checked against their names.
+          </Notice>
+        )}
+        <FileDrop
+          label="Drop files here, or choose them"
+          hint="At most 512 MiB each"
+          maxBytes={512 * 2 ** 20}
+          onFiles={(files) => void take(files)}
+        />
+      </section>
+      {entries.length > 0 && (
+        <section>
+          <SectionOpener
+            number={2}
+            title="Check"
+            context="each line was read; nothing is stored yet"
+          />
+          <div className="flex flex-col gap-8">
+            {entries.map((entry) => (
+              <FileCheck
+                key={entry.key}
+                entry={entry}
+                onSettings={(settings) => void read({ ...entry, settings })}
+                onStore={() => void store(entry)}
+                onDrop={() => setEntries((all) => all.filter((other) => other.key !== entry.key))}
+              />
+            ))}
+          </div>
+        </section>
+      )}
+      {(ready.length > 0 || stored.length > 0) && (
+        <section>
+          <SectionOpener number={3} title="Store" context="all of a file or nothing of it" />
+          {stored.length > 0 && (
+            <Notice
+              tone="ok"
+              isAnnounced
+              title={`${stored.length} ${stored.length === 1 ? 'file is' : 'files are'} stored.`}
+              actions={
+                <LinkButton href={`/${collaboration}/surveys/${survey.slug}`}>
+                  Open {survey.name}
+                </LinkButton>
+              }
+            >
+              {stored.some((entry) => entry.kind === 'contrast-curves')
+                ? 'The completeness maps start by themselves.'
+                : 'The original bytes are kept beside what was read.'}
+            </Notice>
+          )}
+          {ready.length > 0 && (
+            <div className="mt-3">
+              <Button variant="primary" onClick={() => void storeAll()}>
+                {ready.length === 1 ? `Store ${ready[0].file.name}` : `Store ${ready.length} files`}
+              </Button>
+            </div>
+          )}
+        </section>
+      )}
+    </div>
+  );
+}

@@ -1,0 +1,39 @@
+import type { MapSettings } from '@/lib/schemas/sensitivity';
+
+type Law = MapSettings['eccentricity'];
+
+/** Laws offered on the form; scripts may state others. */
+export const eccentricityChoices: { law: Law; words: string }[] = [
+  { law: { law: 'uniform', max: 0.95 }, words: 'uniform from 0 to 0.95' },
+  { law: { law: 'circular' }, words: 'circular orbits' },
+  {
+    law: { law: 'beta', alpha: 0.867, beta: 3.03 },
+    words: 'Beta(0.867, 3.03), as of radial-velocity planets',
+  },
+  { law: { law: 'beta', alpha: 30, beta: 200 }, words: 'Beta(30, 200), as of imaged planets' },
+  { law: { law: 'rayleigh', sigma: 0.3 }, words: 'Rayleigh, σ 0.3' },
+];
+
+export function describeEccentricity(law: Law): string {
+  switch (law.law) {
+    case 'circular':
+      return 'circular orbits';
+    case 'fixed':
+      return `eccentricity ${law.eccentricity}`;
+    case 'uniform':
+      return `eccentricities uniform from 0 to ${law.max}`;
+    case 'beta':
+      return `eccentricities Beta(${law.alpha}, ${law.beta})`;
+    case 'rayleigh':
+      return `eccentricities Rayleigh, σ ${law.sigma}`;
+  }
+}
+
+/** One line: with which settings the survey's curves become maps. */
+export function describeMapSettings(settings: MapSettings, coolingName: string | null): string {
+  const cooling =
+    settings.cooling.kind === 'built-in'
+      ? 'approximate cooling law'
+      : (coolingName ?? 'cooling table');
+  return `${cooling}; ${describeEccentricity(settings.eccentricity)}; ${settings.threshold} threshold`;
+}

@@ -1,0 +1,191 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
+import { Button } from '@/components/ui/button';
+import { EmptyState } from '@/components/ui/empty-state';
+import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { Tabs } from '@/components/ui/tabs';
+import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
+import type { UploadView } from '@/lib/schemas/uploads';
+import { CompanionTable } from './companion-table';
+import { MapJobLine } from './map-job-line';
+import { describeMapSettings } from './map-setting-words';
+import { observedYears } from './survey-table';
+import { TargetPanel } from './target-panel';
+import { TargetTable } from './target-table';
+import { UploadList } from './upload-list';
+
+interface SurveyScreenProps {
+  collaboration: string;
+  survey: SurveyView;
+  targets: TargetList;
+  companions: CompanionView[];
+  uploads: UploadView[];
+  coolingName: string | null;
+}
+
+function factsOf(survey: SurveyView): Fact[] {
+  const { companions } = survey;
+  const open = companions.candidate + companions.ambiguous;
+  return [
+    { name: 'targets', value: survey.targets },
+    { name: 'contrast curves', value: survey.curves },
+    { name: 'maps ready', value: survey.maps.ready, note: `of ${survey.targets}` },
+    { name: 'also in another survey', value: survey.alsoInAnother },
+    { name: 'vetted detections', value: companions.confirmed },
+    { name: 'open candidates', value: open },
+    ...(survey.summedCompleteness === null
+      ? []
+      : [{ name: 'sum of detection probabilities', value: survey.summedCompleteness.toFixed(1) }]),
+  ];
+}
+
+/** One survey: what it holds, what is on its way, and each target with its curve and map. */
+export function SurveyScreen(props: SurveyScreenProps) {
+  const { collaboration, uploads, coolingName } = props;
+  const { data: survey = props.survey, mutate } = useSurvey(
+    collaboration,
+    props.survey.slug,
+    props.survey,
+  );
+  const isOpen = survey.mapJob?.status === 'running' || survey.mapJob?.status === 'waiting';
+  const { data: list = props.targets, mutate: mutateTargets } = useTargets(
+    collaboration,
+    survey.slug,
+    props.targets,
+    isOpen,
+  );
+  const { data: companions = props.companions } = useCompanions(
+    collaboration,
+    survey.slug,
+    props.companions,
+  );
+  const [selectedId, setSelectedId] = useState<string | null>(null);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const selected =
+    list.targets.find((target) => target.id === selectedId) ?? list.targets[0] ?? null;
+  const importHref = `/${collaboration}/surveys/${survey.slug}/import`;
+  const compute = async () => {
+    setRefusal(null);
+    try {
+      await startMaps(collaboration, survey.slug);
+      await mutate();
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+  };
+  const remarks = list.targets.filter((target) => target.checks.length > 0);
+  return (
+    <>
+      <PageTitle
+        title={survey.name}
+        crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: survey.name }]}
+        context={`${survey.band} band, observed ${observedYears(survey)}; lead ${survey.lead?.name ?? 'nobody'}. Maps: ${describeMapSettings(survey.mapSettings, coolingName)}`}
+        actions={
+          survey.can.import && (
+            <>
+              {survey.curves > 0 && survey.maps.ready < survey.targets && !isOpen && (
+                <Button onClick={() => void compute()}>Compute the missing maps</Button>
+              )}
+              <LinkButton href={importHref} variant="primary" icon="add">
+                Import files
+              </LinkButton>
+            </>
+          )
+        }
+      />
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {survey.targets === 0 ? (
+        <div className="mt-8">
+          <EmptyState
+            title="No target yet"
+            actions={
+              survey.can.import && (
+                <LinkButton href={importHref} variant="primary" icon="add">
+                  Import targets
+                </LinkButton>
+              )
+            }
+          >
+            Start with the file of targets; contrast curves or ready maps and companions follow,
+            each checked against the targets.
+          </EmptyState>
+        </div>
+      ) : (
+        <>
+          <FactsStrip facts={factsOf(survey)} />
+          <MapJobLine
+            collaboration={collaboration}
+            survey={survey}
+            onChanged={() => void mutate()}
+          />
+          <div className="mt-5 grid gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,2fr)_minmax(0,1fr)]">
+            <Tabs
+              label="Parts of the survey"
+              tabs={[
+                {
+                  id: 'targets',
+                  label: 'Targets',
+                  count: survey.targets,
+                  content: (
+                    <TargetTable
+                      targets={list.targets}
+                      selectedId={selected?.id ?? null}
+                      onSelect={setSelectedId}
+                    />
+                  ),
+                },
+                {
+                  id: 'candidates',
+                  label: 'Candidates',
+                  count: companions.length,
+                  content: <CompanionTable companions={companions} />,
+                },
+                {
+                  id: 'checks',
+                  label: 'Checks',
+                  count: remarks.length,
+                  content: (
+                    <ul className="divide-y divide-rule">
+                      {remarks.length === 0 && (
+                        <li className="py-4 text-ink3">No remark on any target.</li>
+                      )}
+                      {remarks.map((target) => (
+                        <li key={target.id} className="py-2">
+                          <span className="font-semibold">{target.name}</span>:{' '}
+                          {target.checks.join('; ')}
+                        </li>
+                      ))}
+                    </ul>
+                  ),
+                },
+                {
+                  id: 'files',
+                  label: 'Files',
+                  count: uploads.length,
+                  content: <UploadList collaboration={collaboration} uploads={uploads} />,
+                },
+              ]}
+            />
+            {selected && (
+              <TargetPanel
+                key={selected.id}
+                collaboration={collaboration}
+                survey={survey}
+                targets={list.targets}
+                companions={companions}
+                target={selected}
+                onChanged={() => void mutateTargets()}
+              />
+            )}
+          </div>
+        </>
+      )}
+    </>
+  );
+}
