@@ -1,0 +1,102 @@
+import Link from 'next/link';
+import { HistoryStaircase } from '@/components/charts/history-staircase';
+import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
+import { describePrior } from '@/lib/inference';
+import { formatRange, formatSignificant } from '@/lib/quantities/display';
+import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { Overview } from '@/lib/schemas/overview';
+
+const dateOf = (moment: string) =>
+  new Date(moment).toLocaleDateString('en-GB', {
+    day: 'numeric',
+    month: 'long',
+    year: 'numeric',
+    timeZone: 'UTC',
+  });
+
+function subjectOf(quantity: string | null): { unit: string; words: string } {
+  return quantity === 'companions_per_star'
+    ? { unit: '/100', words: 'stars: planets per 100 stars, of' }
+    : { unit: ' %', words: 'of stars host at least one planet of' };
+}
+
+/** The lead analysis as a sentence, and how its limit has moved. */
+export function LeadPlate({
+  collaboration,
+  overview,
+  lead,
+}: {
+  collaboration: string;
+  overview: Overview;
+  lead: AnalysisView;
+}) {
+  const run = lead.runs.find((one) => one.limit !== null);
+  const { definition } = lead.population;
+  if (!run || run.limit === null || run.quantity === null) return null;
+  const { unit, words } = subjectOf(run.quantity);
+  const level = `${formatSignificant(100 * run.credibleLevel, 3)} %`;
+  const detections = run.detections ?? 0;
+  return (
+    <Plate>
+      <div className="grid gap-x-12 gap-y-6 lg:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
+        <div>
+          <p className="text-[14px] text-ink3">
+            Lead analysis, {lead.key}, run {run.number} of {dateOf(run.finishedAt ?? run.createdAt)}
+          </p>
+          <StatementNumber value={formatSignificant(100 * run.limit, 2)} unit={unit} />
+          <p className="font-light text-[22px] leading-[1.34] md:text-[27px]">
+            {words}{' '}
+            <b className="font-semibold">
+              {formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ')}
+            </b>{' '}
+            at{' '}
+            <b className="font-semibold">
+              {formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU')}
+            </b>
+          </p>
+          <div className="mt-4">
+            <Conditions
+              rows={[
+                { name: 'Level', value: `${level} credible` },
+                { name: 'Prior', value: describePrior(lead.recipe.prior, run.quantity) },
+                {
+                  name: 'Sample',
+                  value: `${run.stars} stars, ${detections} vetted ${detections === 1 ? 'detection' : 'detections'}`,
+                },
+              ]}
+            />
+          </div>
+          <p className="mt-4 flex flex-wrap gap-x-7 gap-y-2 text-[14px]">
+            <Link
+              className="font-semibold text-p-data"
+              href={`/${collaboration}/analyses/${lead.key}`}
+            >
+              Open {lead.key}
+            </Link>
+            {run.zeroLimit !== null && detections > 0 && (
+              <Link
+                className="font-semibold text-p-data"
+                href={`/${collaboration}/analyses/${lead.key}?detections=none`}
+              >
+                The same with zero detections
+              </Link>
+            )}
+          </p>
+        </div>
+        <div className="min-w-0">
+          <p className="text-[14px] text-ink3">How the {level} limit has moved</p>
+          <HistoryStaircase
+            quantity={run.quantity}
+            steps={overview.history.map((step) => ({
+              at: Date.parse(step.at),
+              run: step.run,
+              change: step.label,
+              limit: step.limit,
+              limitWithZero: step.zeroLimit,
+            }))}
+          />
+        </div>
+      </div>
+    </Plate>
+  );
+}

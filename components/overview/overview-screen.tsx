@@ -1,0 +1,172 @@
+'use client';
+
+import Link from 'next/link';
+import { AnalysisTable } from '@/components/analyses/analysis-table';
+import { useOverview } from '@/components/hooks/use-overview';
+import { SurveyTable } from '@/components/surveys/survey-table';
+import { EmptyState } from '@/components/ui/empty-state';
+import { Icon } from '@/components/ui/icon';
+import { LinkButton } from '@/components/ui/link-button';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import type { Overview } from '@/lib/schemas/overview';
+import { LeadPlate } from './lead-plate';
+import { OverlapChart } from './overlap-chart';
+
+const timeOf = (moment: string) =>
+  new Date(moment).toLocaleString('en-GB', {
+    day: 'numeric',
+    month: 'short',
+    hour: '2-digit',
+    minute: '2-digit',
+    timeZone: 'UTC',
+  });
+
+function Waiting({ waiting }: { waiting: Overview['waiting'] }) {
+  if (waiting.length === 0) return <p className="py-2 text-ink3">Nothing waits for a person.</p>;
+  return (
+    <ul>
+      {waiting.map((item) => (
+        <li
+          key={`${item.fact}-${item.address}`}
+          className="flex items-start gap-3 border-rule border-b py-2.5 text-[14px]"
+        >
+          <span className="mt-0.5 text-warn">
+            <Icon name="warn" size={16} />
+          </span>
+          <span className="min-w-0 flex-1">
+            <span className="font-semibold">{item.fact}</span>
+            <span className="block text-ink3">{item.detail}</span>
+          </span>
+          <Link className="font-semibold" href={item.address}>
+            {item.verb}
+            <span className="sr-only">: {item.fact}</span>
+          </Link>
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+function Log({ log }: { log: Overview['log'] }) {
+  if (log.length === 0) return <p className="py-2 text-ink3">Nothing has happened yet.</p>;
+  return (
+    <ul>
+      {log.slice(0, 8).map((entry) => (
+        <li
+          key={`${entry.at}-${entry.what}`}
+          className="grid grid-cols-[104px_1fr] gap-x-2 py-1 text-[14px]"
+        >
+          <span className="whitespace-nowrap text-ink3">{timeOf(entry.at)}</span>
+          <span className="min-w-0 break-words">
+            <b className="font-semibold">{entry.who}</b> {entry.what}
+          </span>
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+/** Where do we stand, what waits for me? */
+export function OverviewScreen({
+  collaboration,
+  initial,
+}: {
+  collaboration: string;
+  initial: Overview;
+}) {
+  const { data: overview = initial } = useOverview(collaboration, initial);
+  const { surveys: list, analyses, can } = overview;
+  const lead = analyses.find((analysis) => analysis.key === overview.lead);
+  const base = `/${collaboration}`;
+  const isEmpty = list.surveys.length === 0;
+  return (
+    <>
+      <PageTitle
+        title={overview.name}
+        context={`${overview.people} ${overview.people === 1 ? 'person' : 'people'}, ${list.surveys.length} ${list.surveys.length === 1 ? 'survey' : 'surveys'}, ${list.stars} stars`}
+        actions={
+          <>
+            {can.invite && (
+              <LinkButton href={`${base}/people`} icon="mail">
+                Invite people
+              </LinkButton>
+            )}
+            {can.addSurvey && (
+              <LinkButton href={`${base}/surveys/new`} icon="add">
+                Add a survey
+              </LinkButton>
+            )}
+            {can.addAnalysis && !isEmpty && (
+              <LinkButton href={`${base}/analyses/new`} variant="primary" icon="add">
+                New analysis
+              </LinkButton>
+            )}
+          </>
+        }
+      />
+      {lead && (
+        <div className="mt-5">
+          <LeadPlate collaboration={collaboration} overview={overview} lead={lead} />
+        </div>
+      )}
+      {isEmpty ? (
+        <div className="mt-8">
+          <EmptyState
+            title="No survey yet"
+            actions={
+              can.addSurvey && (
+                <LinkButton href={`${base}/surveys/new`} variant="primary" icon="add">
+                  Add a survey
+                </LinkButton>
+              )
+            }
+          >
+            Bring one file of targets (name, distance, age, each with its error) and one contrast
+            curve a star. You see every line checked before anything is stored.
+          </EmptyState>
+        </div>
+      ) : (
+        <div className="mt-8 grid gap-x-14 gap-y-9 xl:grid-cols-[minmax(0,7fr)_minmax(0,3fr)]">
+          <div className="flex min-w-0 flex-col gap-9">
+            <section>
+              <SectionOpener
+                title="Surveys"
+                tools={can.addSurvey && <Link href={`${base}/surveys/new`}>Add a survey</Link>}
+              />
+              <SurveyTable collaboration={collaboration} list={list} />
+            </section>
+            <section>
+              <SectionOpener
+                title="Analyses"
+                context="upper limits; box: 68 % interval"
+                tools={can.addAnalysis && <Link href={`${base}/analyses/new`}>New analysis</Link>}
+              />
+              <AnalysisTable collaboration={collaboration} analyses={analyses} />
+            </section>
+          </div>
+          <div className="flex min-w-0 flex-col gap-9">
+            <section>
+              <SectionOpener title="Waiting for a person" />
+              <Waiting waiting={overview.waiting} />
+            </section>
+            <section>
+              <SectionOpener
+                title="Overlaps"
+                context={`${list.entries} entries, ${list.stars} stars`}
+              />
+              <OverlapChart list={list} />
+              <p className="mt-2 text-[14px] text-ink3">
+                A star in several surveys has one combined map and counts once.
+              </p>
+            </section>
+            <section>
+              <SectionOpener title="Log" context="UTC" />
+              <Log log={overview.log} />
+            </section>
+          </div>
+        </div>
+      )}
+    </>
+  );
+}
