@@ -77,14 +77,9 @@ export async function countAttempt(name: LimitName, key: string, sentence: strin
   }
 }
 
-/** Refuses without counting: asked before the work of an attempt is done. */
-export async function refuseIfUsedUp(
-  name: LimitName,
-  key: string,
-  sentence: string,
-): Promise<void> {
-  const state = await limiter(name).get(key);
-  if (state && state.consumedPoints >= limits[name].points) refuseUntil(state, sentence);
+/** Gives one counted attempt back: it was no wrong one. */
+export async function uncountAttempt(name: LimitName, key: string): Promise<void> {
+  await limiter(name).reward(key);
 }
 
 /** Forgets the attempts of a key: its owner has proved who they are. */

@@ -24,6 +24,11 @@ function valueAt(root: unknown, path: PropertyKey[]): unknown {
   return value;
 }
 
+/** What must not come back in an answer, or stand in a log of answers. */
+const isSecret = (path: PropertyKey[]) => /password/i.test(String(path[path.length - 1]));
+const hide = (value: unknown) =>
+  typeof value === 'string' ? `${value.length} characters` : quote(typeof value);
+
 const KIND_NAMES: Record<string, string> = {
   string: 'text',
   number: 'a number',
@@ -66,7 +71,7 @@ function faultsOf(issue: z.core.$ZodIssue, root: unknown, place: Place): Fault[]
   const { path, message } = issue;
   const value = valueAt(root, path);
   const item = place(path);
-  const found = quote(value);
+  const found = isSecret(path) ? hide(value) : quote(value);
   const own = isOwnWording(message) ? splitHint(message) : undefined;
   switch (issue.code) {
     case 'unrecognized_keys':

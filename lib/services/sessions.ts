@@ -1,6 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { KnownPerson } from '@/lib/access/actor';
-import { countAttempt, forgetAttempts } from '@/lib/access/attempts';
+import { countAttempt, forgetAttempts, uncountAttempt } from '@/lib/access/attempts';
 import { isPassword } from '@/lib/access/passwords';
 import { beginSession, endSessions, SESSION_IDLE_DAYS } from '@/lib/access/sessions';
 import { LabError, NotFound } from '@/lib/errors';
@@ -71,6 +71,7 @@ export async function signIn(attempt: SignInAttempt): Promise<SignedIn> {
   }
   await forgetAttempts('sign-in-account-address', `${account}:${address}`);
   await forgetAttempts('sign-in-account', account);
+  await uncountAttempt('sign-in-address', address);
   const sessionId = await inTransaction(async (transaction) => {
     const id = await beginSession(person.id, attempt.userAgent, transaction);
     await recordSignIn(person.id, 'sign-in', address, transaction);
