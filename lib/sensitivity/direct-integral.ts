@@ -24,12 +24,25 @@ interface Stretch {
 interface Interval {
   fromY: number;
   toY: number;
+  /** Where the ends stand in the list of places. */
+  fromPlace: number;
+  toPlace: number;
   /** The curves that reach over the interval. */
   stretches: Stretch[];
 }
 
-/** Adds the integral of a straight line v over an interval of ln s against dF. */
-type AddPiece = (fromY: number, toY: number, fromValue: number, toValue: number) => void;
+/** Between the places: a crossing, whose row is not kept. */
+const NO_PLACE = -1;
+
+/** A straight line v over [fromY, toY], to be integrated against dF. */
+type AddPiece = (
+  fromY: number,
+  toY: number,
+  fromValue: number,
+  toValue: number,
+  fromPlace: number,
+  toPlace: number,
+) => void;
 
 /**
  * Completeness summed over separation, node by node of age and distance: the form that holds for
@@ -52,15 +65,14 @@ export function directIntegral(
   columns: number,
   threshold: SensitivitySettings['threshold'],
 ): Float64Array {
-  const intervals = cutIntervals(star.curves, threshold);
+  const { intervals, places } = cutIntervals(star.curves, threshold);
   const completeness = new Float64Array(masses * columns);
   for (let l = 0; l < star.modulus.length; l++) {
-    const sum = newRowSum(fill, columns, star.logDistance[l], intervals);
+    const sum = newRowSum(fill, columns, star.logDistance[l], places);
     for (let m = 0; m < masses; m++) {
-      sum.restart();
       if (threshold === 'hard') addHard(star, intervals, m, star.modulus[l], sum.add);
       else addSmooth(star, intervals, m, star.modulus[l], sum.add);
-      sum.addTo(completeness, m * columns, star.distances.weights[l]);
+      sum.emptyInto(completeness, m * columns, star.distances.weights[l]);
     }
   }
   return completeness;
@@ -70,31 +82,41 @@ export function directIntegral(
 function cutIntervals(
   curves: readonly PreparedCurve[],
   threshold: SensitivitySettings['threshold'],
-): Interval[] {
+): { intervals: Interval[]; places: number[] } {
   const points = curves.flatMap((curve) => [...curve.logSeparation]).sort((a, b) => a - b);
-  const places = points.filter((y, i) => i === 0 || y - points[i - 1] > SAME_PLACE);
+  const ends = points.filter((y, i) => i === 0 || y - points[i - 1] > SAME_PLACE);
   const intervals: Interval[] = [];
-  for (let i = 0; i + 1 < places.length; i++) {
-    const whole = intervalBetween(curves, places[i], places[i + 1]);
-    if (whole.stretches.length === 0) continue;
-    const steps = stepsWithin(whole, threshold);
-    const at = (k: number) => places[i] + ((places[i + 1] - places[i]) * k) / steps;
-    for (let k = 0; k < steps; k++) intervals.push(intervalBetween(curves, at(k), at(k + 1)));
+  const places = [ends[0]];
+  for (let i = 0; i + 1 < ends.length; i++) {
+    const whole = stretchesBetween(curves, ends[i], ends[i + 1]);
+    const steps = stepsWithin(whole, ends[i + 1] - ends[i], threshold);
+    for (let k = 1; k <= steps; k++) {
+      const fromPlace = places.length - 1;
+      const fromY = places[fromPlace];
+      const toY = k === steps ? ends[i + 1] : ends[i] + ((ends[i + 1] - ends[i]) * k) / steps;
+      places.push(toY);
+      const stretches = stretchesBetween(curves, fromY, toY);
+      if (stretches.length === 0) continue;
+      intervals.push({ fromY, toY, fromPlace, toPlace: fromPlace + 1, stretches });
+    }
   }
-  return intervals;
+  return { intervals, places };
 }
 
-function stepsWithin(interval: Interval, threshold: SensitivitySettings['threshold']): number {
-  const { stretches, fromY, toY } = interval;
-  const climb = Math.max(...stretches.map((s) => Math.abs(s.toLimit - s.fromLimit)));
+function stepsWithin(
+  stretches: readonly Stretch[],
+  length: number,
+  threshold: SensitivitySettings['threshold'],
+): number {
+  const climb = Math.max(0, ...stretches.map((s) => Math.abs(s.toLimit - s.fromLimit)));
   const bothVary = stretches.length > 1 || threshold === 'smooth';
   const isCovered = stretches.every((s) => s.fromCoverage === s.toCoverage);
-  const forCoverage = bothVary && !isCovered ? Math.ceil((toY - fromY) / COVERAGE_STEP) : 1;
+  const forCoverage = bothVary && !isCovered ? Math.ceil(length / COVERAGE_STEP) : 1;
   const forLimit = threshold === 'smooth' ? Math.ceil(climb / SMOOTH_STEP_MAG) : 1;
   return Math.max(1, forCoverage, forLimit);
 }
 
-function intervalBetween(curves: readonly PreparedCurve[], fromY: number, toY: number): Interval {
+function stretchesBetween(curves: readonly PreparedCurve[], fromY: number, toY: number): Stretch[] {
   const middle = 0.5 * (fromY + toY);
   const stretches: Stretch[] = [];
   for (const curve of curves) {
@@ -113,7 +135,7 @@ function intervalBetween(curves: readonly PreparedCurve[], fromY: number, toY: n
       toCoverage: line(coverage, toY),
     });
   }
-  return { fromY, toY, stretches };
+  return stretches;
 }
 
 /** Hard rule: each age node cuts the intervals where a limit crosses the companion's magnitude. */
@@ -173,6 +195,8 @@ function addDetected(
     interval.fromY + length * to,
     weight * (1 - missedFrom),
     weight * (1 - missedTo),
+    from === 0 ? interval.fromPlace : NO_PLACE,
+    to === 1 ? interval.toPlace : NO_PLACE,
   );
 }
 
@@ -202,7 +226,8 @@ function addSmooth(
       from += star.ages.weights[k] * (1 - missedFrom);
       to += star.ages.weights[k] * (1 - missedTo);
     }
-    if (from > 0 || to > 0) add(interval.fromY, interval.toY, from, to);
+    if (from === 0 && to === 0) continue;
+    add(interval.fromY, interval.toY, from, to, interval.fromPlace, interval.toPlace);
   }
 }
 
@@ -210,60 +235,54 @@ function addSmooth(
  * Gathers straight pieces into one factor per place, so that a row is read once however many pieces
  * meet there: ∫ v dF = v_b F_b - v_a F_a - (v_b - v_a)(G_b - G_a)/(b - a), G the antiderivative.
  */
-function newRowSum(
-  fill: FillRow,
-  columns: number,
-  logDistance: number,
-  intervals: readonly Interval[],
-) {
-  const rows = new Map<number, SeparationRow>();
-  for (const y of new Set(intervals.flatMap(({ fromY, toY }) => [fromY, toY]))) {
+function newRowSum(fill: FillRow, columns: number, logDistance: number, places: readonly number[]) {
+  const rows = places.map((y) => {
     const row = newRow(columns);
     fill(y + logDistance, row);
-    rows.set(y, row);
-  }
+    return row;
+  });
   const crossing = newRow(columns);
-  const forF = new Map<number, number>();
-  const forG = new Map<number, number>();
-  const increase = (factors: Map<number, number>, y: number, by: number) => {
-    factors.set(y, (factors.get(y) ?? 0) + by);
-  };
-  const add: AddPiece = (fromY, toY, fromValue, toValue) => {
-    increase(forF, toY, toValue);
-    increase(forF, fromY, -fromValue);
-    const change = toValue - fromValue;
-    if (Math.abs(change) < NEGLIGIBLE) return;
-    const length = toY - fromY;
-    if (length < SAME_PLACE) {
-      increase(forF, toY, -0.5 * change);
-      increase(forF, fromY, -0.5 * change);
+  const forF = new Float64Array(places.length);
+  const forG = new Float64Array(places.length);
+  const crossings: { y: number; perF: number; perG: number }[] = [];
+  const increase = (y: number, place: number, perF: number, perG: number) => {
+    if (place === NO_PLACE) {
+      crossings.push({ y, perF, perG });
       return;
     }
-    increase(forG, toY, -change / length);
-    increase(forG, fromY, change / length);
+    forF[place] += perF;
+    forG[place] += perG;
   };
-  const rowAt = (y: number) => {
-    const known = rows.get(y);
-    if (known) return known;
-    fill(y + logDistance, crossing);
-    return crossing;
+  const add: AddPiece = (fromY, toY, fromValue, toValue, fromPlace, toPlace) => {
+    const change = toValue - fromValue;
+    const length = toY - fromY;
+    // A piece too short to divide by counts as a jump half-way up.
+    const isJump = length < SAME_PLACE;
+    const perG = isJump ? 0 : change / length;
+    const half = isJump ? 0.5 * change : 0;
+    increase(toY, toPlace, toValue - half, -perG);
+    increase(fromY, fromPlace, -fromValue - half, perG);
+  };
+  const addRow = (row: SeparationRow, perF: number, perG: number, out: Float64Array) => {
+    const { cumulative, first } = row;
+    for (let j = 0; j < columns; j++) out[j] += perF * cumulative[j] + perG * first[j];
   };
   return {
     add,
-    restart: () => {
-      forF.clear();
-      forG.clear();
-    },
-    addTo: (out: Float64Array, start: number, weight: number) => {
-      for (const [y, factor] of forF) {
-        const slope = forG.get(y) ?? 0;
-        if (Math.abs(factor) < NEGLIGIBLE && slope === 0) continue;
-        const { cumulative, first } = rowAt(y);
-        const [perF, perG] = [weight * factor, weight * slope];
-        for (let j = 0; j < columns; j++) {
-          out[start + j] += perF * cumulative[j] + perG * first[j];
-        }
+    /** Adds the weighted integral of every piece to a map's row, and starts again. */
+    emptyInto: (map: Float64Array, start: number, weight: number) => {
+      const out = map.subarray(start, start + columns);
+      for (let place = 0; place < rows.length; place++) {
+        const isNothing = Math.abs(forF[place]) < NEGLIGIBLE && Math.abs(forG[place]) < NEGLIGIBLE;
+        if (!isNothing) addRow(rows[place], weight * forF[place], weight * forG[place], out);
       }
+      for (const { y, perF, perG } of crossings) {
+        fill(y + logDistance, crossing);
+        addRow(crossing, weight * perF, weight * perG, out);
+      }
+      forF.fill(0);
+      forG.fill(0);
+      crossings.length = 0;
     },
   };
 }

@@ -27,7 +27,7 @@ export function levelProduct(
   columns: number,
 ): Float64Array {
   const { levels, mean, moment, total } = rows;
-  const { probability, integral, certainAt } = thresholdTable(curve.nSigma);
+  const { addLevels, certainAt } = thresholdTable(curve.nSigma);
   const ageWeights = star.ages.weights;
   const ages = ageWeights.length;
   const chance = new Float64Array(levels.length);
@@ -41,10 +41,7 @@ export function levelProduct(
       const magnitude = curve.magnitudes[m * ages + k];
       if (magnitude === Infinity) continue;
       faintest = Math.max(faintest, magnitude);
-      for (let e = 0; e < levels.length; e++) {
-        chance[e] += ageWeights[k] * probability(levels[e] - magnitude);
-        area[e] += ageWeights[k] * integral(levels[e] - magnitude);
-      }
+      addLevels(levels, magnitude, ageWeights[k], chance, area);
     }
     if (faintest === -Infinity) continue;
     const out = m * columns;

@@ -1,4 +1,4 @@
-import { type FillRow, newRow } from './separation-rows';
+import { type FillRow, newRow, type SeparationRow } from './separation-rows';
 import type { PreparedCurve, PreparedStar } from './star-model';
 
 /**
@@ -20,6 +20,8 @@ export interface LevelRows {
 const SHORTEST_PIECE = 1e-7;
 /** A stretch is flat, hence a jump of H, when its limit varies by less than this share of a cell. */
 const FLAT_SHARE = 0.05;
+/** Levels closer than this are one, so that differences across a cell keep their digits. */
+const NARROWEST_CELL_MAG = 1e-6;
 
 interface Piece {
   fromY: number;
@@ -90,7 +92,7 @@ function chooseLevels(pieces: Piece[], widestCell: number): Float64Array {
   const ends = pieces.flatMap((piece) => [piece.fromQ, piece.toQ]);
   const lowest = ends.reduce((a, b) => Math.min(a, b));
   const highest = ends.reduce((a, b) => Math.max(a, b));
-  const fixed = [lowest, Math.max(highest, lowest + 1e-6 * widestCell)];
+  const fixed = [lowest, Math.max(highest, lowest + 1e-3 * widestCell)];
   for (const piece of pieces) {
     if (Math.abs(piece.toQ - piece.fromQ) > FLAT_SHARE * widestCell) continue;
     fixed.push(0.5 * (piece.fromQ + piece.toQ));
@@ -99,7 +101,7 @@ function chooseLevels(pieces: Piece[], widestCell: number): Float64Array {
   const levels = [fixed[0]];
   for (let i = 1; i < fixed.length; i++) {
     const gap = fixed[i] - fixed[i - 1];
-    if (gap < 1e-9) continue;
+    if (gap < NARROWEST_CELL_MAG) continue;
     const steps = Math.ceil(gap / widestCell - 1e-9);
     for (let k = 1; k <= steps; k++) levels.push(fixed[i - 1] + (gap * k) / steps);
   }
@@ -110,10 +112,10 @@ function chooseLevels(pieces: Piece[], widestCell: number): Float64Array {
 function newPieceAdder(rows: LevelRows, whole: Float64Array, fill: FillRow, columns: number) {
   const { levels, mean, moment, total } = rows;
   const cells = levels.length - 1;
-  const bottom = newRow(columns);
-  const top = newRow(columns);
-  let low = newRow(columns);
-  let high = newRow(columns);
+  const spares = [newRow(columns), newRow(columns)];
+  let bottom = newRow(columns);
+  let top = newRow(columns);
+  let topY = Number.NaN;
   const all = new Float64Array(columns);
   return (piece: Piece, weight: number) => {
     const length = piece.toY - piece.fromY;
@@ -121,44 +123,50 @@ function newPieceAdder(rows: LevelRows, whole: Float64Array, fill: FillRow, colu
     const slope = climb / length;
     const kappa = (piece.toCoverage - piece.fromCoverage) / length;
     const coverageAt = (y: number) => piece.fromCoverage + kappa * (y - piece.fromY);
-    fill(piece.fromY, bottom);
+    // Segments follow each other, so the last one's end is this one's beginning.
+    if (piece.fromY === topY) [bottom, top] = [top, bottom];
+    else fill(piece.fromY, bottom);
     fill(piece.toY, top);
+    topY = piece.toY;
+    const { cumulative: topF, first: topG } = top;
+    const { cumulative: bottomF, first: bottomG } = bottom;
+    const { fromCoverage, toCoverage } = piece;
     for (let j = 0; j < columns; j++) {
-      all[j] =
-        piece.toCoverage * top.cumulative[j] -
-        piece.fromCoverage * bottom.cumulative[j] -
-        kappa * (top.first[j] - bottom.first[j]);
+      all[j] = toCoverage * topF[j] - fromCoverage * bottomF[j] - kappa * (topG[j] - bottomG[j]);
       total[j] += weight * all[j];
     }
+    const rises = climb > 0;
     const faintest = Math.max(piece.fromQ, piece.toQ);
     const brightest = Math.min(piece.fromQ, piece.toQ);
     let cell = firstCellAbove(levels, brightest);
     for (let j = 0; j < columns; j++) whole[cell * columns + j] += weight * all[j];
-    const rises = climb > 0;
-    const placeOf = (q: number) =>
-      q <= brightest
+    let low = rises ? bottom : top;
+    let lowY = rises ? piece.fromY : piece.toY;
+    for (let from = brightest; cell < cells; cell++) {
+      const to = Math.min(levels[cell + 1], faintest);
+      const isLast = to === faintest;
+      const spare = spares[cell & 1];
+      const highY = isLast
         ? rises
-          ? piece.fromY
-          : piece.toY
-        : q >= faintest
-          ? rises
-            ? piece.toY
-            : piece.fromY
-          : piece.fromY + (q - piece.fromQ) / slope;
-    let lowY = placeOf(brightest);
-    fill(lowY, low);
-    for (; cell < cells && (levels[cell] < faintest || brightest === faintest); cell++) {
-      const clipLow = Math.max(levels[cell], brightest);
-      const clipHigh = Math.min(levels[cell + 1], faintest);
-      const highY = placeOf(clipHigh);
-      fill(highY, high);
-      addToCell(cell, clipLow, clipHigh, lowY, highY);
-      [low, high] = [high, low];
-      lowY = highY;
-      if (brightest === faintest) break;
+          ? piece.toY
+          : piece.fromY
+        : piece.fromY + (to - piece.fromQ) / slope;
+      if (!isLast) fill(highY, spare);
+      const high = isLast ? (rises ? top : bottom) : spare;
+      addToCell(cell, from, to, low, high, lowY, highY);
+      if (isLast) break;
+      [from, low, lowY] = [to, high, highY];
     }
 
-    function addToCell(c: number, from: number, to: number, yFrom: number, yTo: number): void {
+    function addToCell(
+      c: number,
+      from: number,
+      to: number,
+      low: SeparationRow,
+      high: SeparationRow,
+      yFrom: number,
+      yTo: number,
+    ): void {
       const width = levels[c + 1] - levels[c];
       const middle = 0.5 * (levels[c] + levels[c + 1]);
       const below = from - levels[c];

@@ -2,13 +2,25 @@ import { detectionProbability } from './contrast';
 
 /** p(x) of the smooth threshold and ∫ p dx, x = limit - magnitude in mag, on equal steps. */
 export interface ThresholdTable {
-  /** p below the table: Φ(-n), the chance of a false positive. */
-  floor: number;
   /** Beyond this x a companion is certain to be found. */
   certainAt: number;
   probability(x: number): number;
-  /** ∫ p dx from the table's start; negative below it. */
-  integral(x: number): number;
+  /**
+   * Adds weight · p and weight · ∫ p dx at every level for one magnitude.
+   *
+   * @param levels limits, increasing, shape [level], [mag], not modified
+   * @param magnitude of the companion, [mag], finite
+   * @param weight factor
+   * @param chance added to in place, shape [level]
+   * @param area added to in place, shape [level]; the integral's constant is the same at all levels
+   */
+  addLevels(
+    levels: Float64Array,
+    magnitude: number,
+    weight: number,
+    chance: Float64Array,
+    area: Float64Array,
+  ): void;
 }
 
 /** p is Φ(-n) to nine digits below it. */
@@ -38,23 +50,34 @@ export function thresholdTable(nSigma: number): ThresholdTable {
     if (i > 0) sum[i] = sum[i - 1] + 0.5 * step * (p[i - 1] + p[i]);
   }
   const [floor, top] = [p[0], sum[steps]];
+  const perStep = 1 / step;
   const table: ThresholdTable = {
-    floor,
     certainAt,
     probability: (x) => {
-      const place = (x - START_MAG) / step;
+      const place = (x - START_MAG) * perStep;
       if (!(place > 0)) return floor;
       if (place >= steps) return 1;
       const i = place | 0;
       return p[i] + (p[i + 1] - p[i]) * (place - i);
     },
-    integral: (x) => {
-      const place = (x - START_MAG) / step;
-      if (!(place > 0)) return floor * (x - START_MAG);
-      if (place >= steps) return top + x - certainAt;
-      const i = place | 0;
-      const t = place - i;
-      return sum[i] + step * t * (p[i] + 0.5 * t * (p[i + 1] - p[i]));
+    addLevels: (levels, magnitude, weight, chance, area) => {
+      for (let e = 0; e < levels.length; e++) {
+        const x = levels[e] - magnitude;
+        const place = (x - START_MAG) * perStep;
+        if (place <= 0) {
+          chance[e] += weight * floor;
+          area[e] += weight * floor * (x - START_MAG);
+        } else if (place >= steps) {
+          chance[e] += weight;
+          area[e] += weight * (top + x - certainAt);
+        } else {
+          const i = place | 0;
+          const t = place - i;
+          const rise = t * (p[i + 1] - p[i]);
+          chance[e] += weight * (p[i] + rise);
+          area[e] += weight * (sum[i] + step * t * (p[i] + 0.5 * rise));
+        }
+      }
     },
   };
   if (tables.size >= 16) tables.clear();
