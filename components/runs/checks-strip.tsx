@@ -8,11 +8,14 @@ interface ChecksStripProps {
   shareFlaggedCooling: number;
   /** Undecided candidates whose best values lie in the ranges now. */
   undecidedInside: string[];
+  /** Set while the setting is another: what was judged for the run's own ranges says so. */
+  ofRun?: number;
 }
 
 /** What a reader should know before the number is used, in one line. */
 export function ChecksStrip(props: ChecksStripProps) {
-  const { inputs, shareOutsideMaps, shareFlaggedCooling, undecidedInside } = props;
+  const { inputs, shareOutsideMaps, shareFlaggedCooling, undecidedInside, ofRun } = props;
+  const inRun = ofRun === undefined ? '' : `, run ${ofRun}`;
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
   const overlapping = entries - inputs.stars.length;
   return (
@@ -28,9 +31,10 @@ export function ChecksStrip(props: ChecksStripProps) {
             ? '1 candidate inside the ranges still unvetted: '
             : `${undecidedInside.length} candidates inside the ranges still unvetted: `}
           {undecidedInside.join(', ')}
+          {inRun}
         </StateMark>
       ) : (
-        <StateMark kind="ok">No unvetted candidate inside the ranges</StateMark>
+        <StateMark kind="ok">No unvetted candidate inside the ranges{inRun}</StateMark>
       )}
       {shareOutsideMaps > 0.0005 ? (
         <StateMark kind="warn">
@@ -42,6 +46,7 @@ export function ChecksStrip(props: ChecksStripProps) {
       {shareFlaggedCooling > 0.0005 && (
         <StateMark kind="warn">
           {formatPercent(shareFlaggedCooling)} of it where the cooling model is beyond its validity
+          {inRun}
         </StateMark>
       )}
     </div>

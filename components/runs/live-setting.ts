@@ -1,3 +1,4 @@
+import type { RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { type AnalysisRecipe, type RatePriorInput, ratePriorSchema } from '@/lib/schemas/analyses';
 import type { PopulationDefinition } from '@/lib/schemas/populations';
@@ -9,6 +10,10 @@ export interface LiveSetting {
   detections: AnalysisRecipe['detections'];
   likelihood: AnalysisRecipe['likelihood'];
   prior: RatePriorInput;
+}
+
+export function quantityOf(likelihood: LiveSetting['likelihood']): RateQuantity {
+  return likelihood === 'host-fraction' ? 'host_fraction' : 'companions_per_star';
 }
 
 export type Query = Record<string, string | undefined>;

@@ -12,8 +12,8 @@ import {
 import { RangeControl } from '@/components/charts/range-control';
 import { TraceSlider } from '@/components/charts/trace-slider';
 import { AxisRange, formatIndex, MassRange } from '@/components/populations/law-notation';
-import { Console } from '@/components/ui/console';
 import { ConsequenceSwitch, type SwitchOption } from '@/components/ui/consequence-switch';
+import { Console } from '@/components/ui/console';
 import { TextAction } from '@/components/ui/text-action';
 import { describeLevel, type RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';

@@ -12,8 +12,8 @@ interface ResultStatementProps {
   setting: LiveSetting;
   quantity: RateQuantity;
   answer: LimitAnswer;
-  /** Number for which the statement holds no longer: it follows a control. */
-  isLive: boolean;
+  /** "live" where the number follows a control, "run 18" where it does not follow the setting. */
+  mark?: string;
   /** Ends of the maps. */
   bounds: { mass: [number, number]; axis: [number, number] };
   conditions: { name: string; value: ReactNode }[];
@@ -24,7 +24,7 @@ interface ResultStatementProps {
 
 /** The sentence that a result is read as, with everything that it rests on below. */
 export function ResultStatement(props: ResultStatementProps) {
-  const { setting, quantity, answer, isLive, conditions, announced } = props;
+  const { setting, quantity, answer, mark, conditions, announced } = props;
   const isFraction = quantity === 'host_fraction';
   return (
     <div className="min-w-0">
@@ -33,7 +33,11 @@ export function ResultStatement(props: ResultStatementProps) {
         {answer.isConstrained
           ? `Upper limit, ${describeLevel(setting.credibleLevel)} credible level`
           : 'No limit'}
-        {isLive && <LiveMark />}
+        {mark === 'live' ? (
+          <LiveMark />
+        ) : (
+          mark !== undefined && <span className="ml-2">{mark}</span>
+        )}
       </p>
       {answer.isConstrained && (
         <StatementNumber

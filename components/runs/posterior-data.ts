@@ -1,0 +1,73 @@
+import type { PosteriorData } from '@/components/charts/posterior-words';
+import { type RateCurve, rateAxisMax } from '@/components/charts/rate-curve';
+import type { RateQuantity } from '@/lib/inference';
+import { formatPlain } from '@/lib/quantities/display';
+import type { LimitAnswer } from './live-answer';
+import type { LiveSetting } from './live-setting';
+
+interface PosteriorInputs {
+  setting: LiveSetting;
+  quantity: RateQuantity;
+  answer: LimitAnswer;
+  zero?: LimitAnswer;
+  saved?: LimitAnswer;
+}
+
+/** What the plate draws: the posterior, its prior, and what it is compared with. */
+export function posteriorData(inputs: PosteriorInputs): PosteriorData {
+  const { setting, quantity, answer, zero, saved } = inputs;
+  const top = rateAxisMax(
+    [answer, zero, saved].flatMap((one) => (one === undefined ? [] : [one.limit])),
+    answer.curve.rate[answer.curve.rate.length - 1],
+  );
+  const shown = cutAt(answer.curve, top);
+  const density = answer.prior.subarray(0, shown.rate.length);
+  return {
+    curve: shown,
+    limit: answer.limit,
+    credibleLevel: setting.credibleLevel,
+    quantity,
+    median: answer.median,
+    interval68: answer.interval68,
+    prior: density.some(Number.isFinite)
+      ? { density, label: priorLabel(setting.prior, quantity) }
+      : undefined,
+    alternative:
+      zero === undefined
+        ? undefined
+        : {
+            label: 'same run with zero detections',
+            curve: cutAt(zero.curve, top),
+            limit: zero.limit,
+          },
+    saved: saved === undefined ? undefined : { curve: cutAt(saved.curve, top), limit: saved.limit },
+  };
+}
+
+/** The part of a curve up to a rate. */
+export function cutAt(curve: RateCurve, top: number): RateCurve {
+  let end = curve.rate.findIndex((rate) => rate > top * (1 + 1e-9));
+  if (end < 2) end = curve.rate.length;
+  return {
+    rate: curve.rate.subarray(0, end),
+    density: curve.density.subarray(0, end),
+    cumulative: curve.cumulative.subarray(0, end),
+  };
+}
+
+/** Short enough to stand on the line: "uniform in f from 0 to 1". */
+function priorLabel(prior: LiveSetting['prior'], quantity: RateQuantity): string {
+  const rate = quantity === 'host_fraction' ? 'f' : 'the mean number';
+  switch (prior.law) {
+    case 'uniform':
+      return `uniform in ${rate} from 0 to ${formatPlain(prior.max)}`;
+    case 'log-uniform':
+      return `log-uniform from ${formatPlain(prior.min)} to ${formatPlain(prior.max)}`;
+    case 'jeffreys':
+      return 'Jeffreys';
+    case 'gamma':
+      return `gamma (${formatPlain(prior.shape)}, ${formatPlain(prior.rate)})`;
+    case 'beta':
+      return `beta (${formatPlain(prior.a)}, ${formatPlain(prior.b)})`;
+  }
+}

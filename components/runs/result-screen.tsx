@@ -1,0 +1,215 @@
+'use client';
+
+import { useMemo, useState } from 'react';
+import { useAddressQuery } from '@/components/hooks/use-address-query';
+import { useAnalysis } from '@/components/hooks/use-analyses';
+import { usePopulations } from '@/components/hooks/use-populations';
+import { useRun } from '@/components/hooks/use-runs';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { StateMark } from '@/components/ui/state-mark';
+import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
+import type { PopulationView } from '@/lib/schemas/populations';
+import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import {
+  isSameSetting,
+  type LiveSetting,
+  type Query,
+  settingFromQuery,
+  settingOfRecipe,
+  settingToQuery,
+} from './live-setting';
+import { NoRunPlate } from './no-run-plate';
+import { ResultActions } from './result-actions';
+import { ResultBody } from './result-body';
+import { RunEnded, RunProgress } from './run-progress';
+
+interface ResultScreenProps {
+  collaboration: string;
+  analysis: AnalysisView;
+  /** Newest finished run, with its result. */
+  run: RunView | null;
+  /** The population that this run used. */
+  runPopulation: PopulationView | null;
+  query: Query;
+}
+
+export function isFinished(run: RunSummary): boolean {
+  return run.job.status === 'done' && run.limit !== null;
+}
+
+export function isOnItsWay(run: RunSummary | undefined): run is RunSummary {
+  return run?.job.status === 'waiting' || run?.job.status === 'running';
+}
+
+/** An analysis: its newest result, live under the controls, and what becomes of a change. */
+export function ResultScreen(props: ResultScreenProps) {
+  const { collaboration, query } = props;
+  const { data: analysis = props.analysis, mutate } = useAnalysis(
+    collaboration,
+    props.analysis.key,
+    props.analysis,
+  );
+  const finished = analysis.runs.find(isFinished);
+  const newest = analysis.runs[0];
+  const { data: run = props.run } = useRun(collaboration, finished?.id, props.run ?? undefined);
+  const definition = useRunDefinition(collaboration, analysis, run, props.runPopulation);
+
+  const inRecipe = useMemo(
+    () => settingOfRecipe(analysis.recipe, analysis.population.definition),
+    [analysis.recipe, analysis.population.definition],
+  );
+  const [moved, setMoved] = useState<LiveSetting | undefined>(() => {
+    const asked = settingFromQuery(query, inRecipe);
+    return isSameSetting(asked, inRecipe) ? undefined : asked;
+  });
+  const setting = moved ?? inRecipe;
+  const isUnsaved = moved !== undefined && !isSameSetting(moved, inRecipe);
+  useAddressQuery(settingToQuery(setting, inRecipe));
+
+  const refresh = () => {
+    void mutate();
+  };
+  const ended = newest?.job.status === 'failed' || newest?.job.status === 'cancelled';
+  const actions = (
+    <ResultActions
+      collaboration={collaboration}
+      analysis={analysis}
+      run={finished}
+      setting={setting}
+      isUnsaved={isUnsaved}
+      isBusy={isOnItsWay(newest)}
+      onUndo={() => setMoved(undefined)}
+      onSaved={() => {
+        setMoved(undefined);
+        refresh();
+      }}
+    />
+  );
+
+  return (
+    <>
+      <PageTitle
+        title={analysis.name}
+        crumbs={[
+          { href: `/${collaboration}/analyses`, label: 'Analyses' },
+          { label: analysis.key },
+        ]}
+        state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
+        actions={actions}
+      />
+      <div className="grid gap-3 empty:hidden [&:not(:empty)]:mb-4">
+        {isOnItsWay(newest) && (
+          <RunProgress
+            collaboration={collaboration}
+            run={newest}
+            canStop={analysis.can.run}
+            onChanged={refresh}
+          />
+        )}
+        {ended && (
+          <RunEnded
+            collaboration={collaboration}
+            run={newest}
+            canStop={analysis.can.run}
+            onChanged={refresh}
+          />
+        )}
+        {finished?.hasOlderInputs && (
+          <Notice tone="warn" title="Made with older inputs.">
+            Newer maps, companions or targets exist than run {finished.number} used. It stays as it
+            is; a new run would use them.
+          </Notice>
+        )}
+        {analysis.state === 'changed' && finished && !needsOnlyLive(analysis, run) && (
+          <Notice
+            tone="warn"
+            title={`Surveys or their combination changed since run ${finished.number}.`}
+          >
+            The number below is of run {finished.number} until a new run is made.
+          </Notice>
+        )}
+      </div>
+      {run?.result && run.inputs && definition ? (
+        <ResultBody
+          key={run.id}
+          collaboration={collaboration}
+          analysis={analysis}
+          run={run}
+          inputs={run.inputs}
+          result={run.result}
+          inRun={settingOfRun(run, definition) ?? inRecipe}
+          setting={setting}
+          isUnsaved={isUnsaved}
+          footActions={actions}
+          onSetting={setMoved}
+        />
+      ) : (
+        <NoRunPlate
+          collaboration={collaboration}
+          analysis={analysis}
+          isOnItsWay={isOnItsWay(newest)}
+          onStarted={refresh}
+        />
+      )}
+    </>
+  );
+}
+
+function AnalysisState({
+  analysis,
+  isUnsaved,
+  run,
+}: {
+  analysis: AnalysisView;
+  isUnsaved: boolean;
+  run: RunSummary | undefined;
+}) {
+  if (isUnsaved) return <StateMark kind="unsaved">Unsaved change</StateMark>;
+  switch (analysis.state) {
+    case 'running':
+      return <StateMark kind="running">Running</StateMark>;
+    case 'failed':
+      return <StateMark kind="bad">Draft, run {analysis.runs[0]?.number} failed</StateMark>;
+    case 'changed':
+      return <StateMark kind="unsaved">Draft, changed since run {run?.number}</StateMark>;
+    case 'run':
+      return <StateMark kind="draft">Draft, run {run?.number}, all changes saved</StateMark>;
+    case 'draft':
+      return <StateMark kind="draft">Draft, no run yet</StateMark>;
+  }
+}
+
+/** The population of the shown run: not always the one that the recipe names by now. */
+function useRunDefinition(
+  collaboration: string,
+  analysis: AnalysisView,
+  run: RunView | null,
+  known: PopulationView | null,
+) {
+  const wanted = run?.inputs?.population.id;
+  const atHand = [analysis.population, known].find((population) => population?.id === wanted);
+  const { data: all } = usePopulations(
+    collaboration,
+    atHand === undefined || atHand === null ? undefined : [atHand],
+  );
+  return (atHand ?? all?.find((population) => population.id === wanted))?.definition;
+}
+
+function settingOfRun(
+  run: RunView,
+  definition: PopulationView['definition'],
+): LiveSetting | undefined {
+  const recipe = analysisRecipeSchema.safeParse(run.recipe);
+  return recipe.success ? settingOfRecipe(recipe.data, definition) : undefined;
+}
+
+/** Whether the recipe differs from the run in nothing that needs new maps. */
+function needsOnlyLive(analysis: AnalysisView, run: RunView | null): boolean {
+  const recipe = analysisRecipeSchema.safeParse(run?.recipe);
+  if (!recipe.success) return false;
+  return (
+    recipe.data.combination === analysis.recipe.combination &&
+    [...recipe.data.surveyIds].sort().join() === [...analysis.recipe.surveyIds].sort().join()
+  );
+}
