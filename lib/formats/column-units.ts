@@ -57,9 +57,10 @@ function problem(kind: ColumnUnit, text: string): UnitProblem {
     : { code: 'unit-mismatch', found: `${found}, which measures ${other}`, expected };
 }
 
-/** A flux ratio as magnitudes, NaN outside 0 to 1. */
+/** A flux ratio as magnitudes, NaN outside 0 to 1; as bright as the star is 0 mag. */
 function contrastOrNaN(ratio: number): number {
-  return ratio > 0 && ratio <= 1 ? contrastMagFromFluxRatio(ratio) + 0 : Number.NaN;
+  if (ratio === 1) return 0;
+  return ratio > 0 && ratio < 1 ? contrastMagFromFluxRatio(ratio) : Number.NaN;
 }
 
 /**

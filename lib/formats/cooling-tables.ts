@@ -36,32 +36,31 @@ export function readCoolingTable(reading: TableReading): CoolingTableRecord[] {
     return [];
   }
   const entries = readEntries(reading);
-  if (reading.faults.count > 0) return [];
   const byAge = groupByAge(entries);
-  checkCounts(reading, byAge);
-  if (reading.faults.count > 0) return [];
   const ageMyr = [...byAge.keys()].sort((a, b) => a - b);
   const massMjup = [...new Set(entries.map((entry) => entry.massMjup))].sort((a, b) => a - b);
   const grid = (name: string) => readGrid(reading, entries, name, massMjup, ageMyr);
   const magnitudes: CoolingTableRecord['magnitudes'] = {};
-  for (const band of bands) {
-    magnitudes[band] = grid(`mag_${band}`);
-    warnOfBrightening(reading, byAge, band);
-  }
-  if (entries.length < massMjup.length * ageMyr.length) {
-    const missing = massMjup.length * ageMyr.length - entries.length;
-    const message = `${missing} of ${massMjup.length * ageMyr.length} points of mass and age are not in the table; nothing is extrapolated`;
-    reading.notes.inform('grid-ragged', message);
-  }
-  return [
-    {
-      massMjup,
-      ageMyr,
-      magnitudes,
-      logLuminosity: reading.has('log_luminosity') ? grid('log_luminosity') : null,
-      temperatureK: reading.has('temperature') ? grid('temperature') : null,
-    },
-  ];
+  for (const band of bands) magnitudes[band] = grid(`mag_${band}`);
+  const record: CoolingTableRecord = {
+    massMjup,
+    ageMyr,
+    magnitudes,
+    logLuminosity: reading.has('log_luminosity') ? grid('log_luminosity') : null,
+    temperatureK: reading.has('temperature') ? grid('temperature') : null,
+  };
+  // Counts say something about the file only once every row was understood.
+  if (reading.faults.count > 0) return [];
+  checkCounts(reading, byAge);
+  for (const band of bands) warnOfBrightening(reading, byAge, band);
+  tellRagged(reading, entries.length, massMjup.length * ageMyr.length);
+  return [record];
+}
+
+function tellRagged(reading: TableReading, present: number, points: number): void {
+  if (present === points) return;
+  const message = `${points - present} of ${points} points of mass and age are not in the table; nothing is extrapolated`;
+  reading.notes.inform('grid-ragged', message);
 }
 
 function readEntries(reading: TableReading): Entry[] {

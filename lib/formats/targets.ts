@@ -21,8 +21,7 @@ interface Tally {
 
 /** Reads a table of targets. */
 export function readTargets(reading: TableReading): TargetRecord[] {
-  checkHeadings(reading);
-  if (reading.faults.count > 0) return [];
+  if (!checkHeadings(reading)) return [];
   const names = new TargetNames(reading);
   const bands = bandsOf(reading.names());
   const tally: Tally = { withoutAgeError: 0, catalogueEpochs: 0, gaiaEpochs: 0 };
@@ -34,7 +33,9 @@ export function readTargets(reading: TableReading): TargetRecord[] {
   return records;
 }
 
-function checkHeadings(reading: TableReading): void {
+/** Reports columns that came without their partner; true where there is none. */
+function checkHeadings(reading: TableReading): boolean {
+  const before = reading.faults.count;
   const pairs: [string, string][] = [];
   for (const [a, b] of targetPairs) pairs.push([a, b], [b, a]);
   for (const band of bandsOf(reading.names().map((name) => name.replace(/_error$/, '')))) {
@@ -48,6 +49,7 @@ function checkHeadings(reading: TableReading): void {
       expected: present.endsWith('_error') ? `the column "${absent}" as well` : 'both or neither',
     });
   }
+  return reading.faults.count === before;
 }
 
 function readTarget(

@@ -61,7 +61,7 @@ function readRow(row: Row): ReadResult {
 const titled = (answer: Row['expect']) =>
   rows.filter((row) => row.expect === answer).map((row) => [`${row.id} ${row.case}`, row] as const);
 
-describe('the list of odd and bad CSV files', () => {
+describe('the list of odd and bad CSV files', { timeout: 60_000 }, () => {
   it('names a file that exists, or one that is made here, in every row', () => {
     for (const row of rows) {
       const isThere = row.file === '' ? row.id in made : existsSync(path.join(folder, row.file));

@@ -197,7 +197,7 @@ function readBack(text: string): TargetRecord[] {
 
 const withoutLines = (records: TargetRecord[]) => records.map(({ line: _, ...rest }) => rest);
 
-describe('writeTargets(targets)', () => {
+describe('writeTargets(targets)', { timeout: 60_000 }, () => {
   it('reads back to the same records, to the last bit', () => {
     fc.assert(
       fc.property(fc.array(target, { minLength: 1, maxLength: 20 }).map(distinct), (targets) => {
