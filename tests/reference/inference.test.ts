@@ -1,0 +1,150 @@
+import { expect, test } from 'vitest';
+import {
+  hostFractionUpperLimit,
+  poissonBinomial,
+  type RatePrior,
+  ratePosterior,
+  upperLimit,
+} from '@/lib/inference';
+import { gammaP, logGamma } from '@/lib/numerics/special';
+import { differences, readChecks, runCheckFile } from './support/check-file';
+
+function numberPosterior(exposure: number, detections: number, prior: RatePrior) {
+  return ratePosterior({
+    likelihood: 'mean-number',
+    completeness: Float64Array.of(exposure),
+    detectedStars: new Array<number>(detections).fill(0),
+    prior,
+  });
+}
+
+function fractionPosterior(
+  stars: number,
+  completeness: number,
+  detections: number,
+  prior: RatePrior,
+) {
+  return ratePosterior({
+    likelihood: 'host-fraction',
+    completeness: new Float64Array(stars).fill(completeness),
+    detectedStars: Array.from({ length: detections }, (_, star) => star),
+    prior,
+  });
+}
+
+/** Flat and unbounded, for the mean number. */
+const FLAT: RatePrior = { law: 'gamma', shape: 1, rate: 0 };
+
+/** Sum of Poisson probabilities of the counts whose limit is at or above the true rate. */
+function coverage(exposure: number, level: number, rates: number[], prior: RatePrior): number[] {
+  const limits = Array.from({ length: 120 }, (_, k) =>
+    upperLimit(numberPosterior(exposure, k, prior), level),
+  );
+  return rates.map((rate) => {
+    const mean = rate * exposure;
+    return limits.reduce(
+      (total, limit, k) =>
+        limit < rate ? total : total + Math.exp(k * Math.log(mean) - mean - logGamma(k + 1)),
+      0,
+    );
+  });
+}
+
+/**
+ * Where every star is fully seen the density is the arcsine law, 1/(pi sqrt(f (1 - f))). The file's
+ * quadrature grid stops short of the singular end f = 1, which makes its values 0.11 % too high.
+ */
+const ARCSINE = 'Jeffreys density host fraction [1.0, 1.0, 1.0]';
+
+function jeffreysDensity(completeness: number[], fractions: number[]): number[] {
+  const posterior = ratePosterior({
+    likelihood: 'host-fraction',
+    completeness: Float64Array.from(completeness),
+    detectedStars: [],
+    prior: { law: 'jeffreys' },
+  });
+  return fractions.map((f) => posterior.priorDensity(f));
+}
+
+runCheckFile('inference', {
+  runners: {
+    'flat prior': ({ exposure, detections, max, level }) => {
+      const posterior = numberPosterior(exposure, detections, { law: 'uniform', max });
+      return {
+        upper_limit: upperLimit(posterior, level),
+        mean: posterior.mean,
+        unbounded_upper_limit: upperLimit(numberPosterior(exposure, detections, FLAT), level),
+      };
+    },
+    'log-uniform prior': ({ exposure, detections, floor, max, level }) =>
+      upperLimit(
+        numberPosterior(exposure, detections, { law: 'log-uniform', min: floor, max }),
+        level,
+      ),
+    'Jeffreys prior mean number': ({ exposure, detections, level }) =>
+      upperLimit(numberPosterior(exposure, detections, { law: 'jeffreys' }), level),
+    'gamma prior': ({ exposure, detections, shape, rate, level }) => {
+      const posterior = numberPosterior(exposure, detections, { law: 'gamma', shape, rate });
+      // A gamma distribution's shape and rate follow from its mean and standard deviation.
+      const { mean, standardDeviation } = posterior;
+      return {
+        posterior_shape: (mean / standardDeviation) ** 2,
+        posterior_rate: mean / standardDeviation ** 2,
+        mean,
+        upper_limit: upperLimit(posterior, level),
+      };
+    },
+    'beta prior': ({ stars, completeness, detections, a, b, level }) => {
+      const posterior = fractionPosterior(stars, completeness, detections, { law: 'beta', a, b });
+      return { mean: posterior.mean, upper_limit: upperLimit(posterior, level) };
+    },
+    'host fraction no detection': ({ stars, completeness, level }) =>
+      upperLimit(fractionPosterior(stars, completeness, 0, { law: 'uniform', max: 1 }), level),
+    'Jeffreys density host fraction': ({ completeness_per_star: completeness, fractions }) =>
+      jeffreysDensity(completeness, fractions),
+    'exact host fraction limit': ({ completeness_per_star: completeness, detections, level }) =>
+      hostFractionUpperLimit(Float64Array.from(completeness), detections, level),
+    'Poisson-binomial': ({ probabilities }) => poissonBinomial(probabilities),
+    'coverage of the flat upper limit': ({ exposure, level, rates }) =>
+      coverage(exposure, level, rates, FLAT),
+    'coverage of the Jeffreys upper limit': ({ exposure, level, rates }) =>
+      coverage(exposure, level, rates, { law: 'jeffreys' }),
+    'prior-averaged coverage': ({ exposure, max, level }) => {
+      let total = 0;
+      for (let k = 0; k < 200; k++) {
+        const limit = upperLimit(numberPosterior(exposure, k, { law: 'uniform', max }), level);
+        total += gammaP(k + 1, limit * exposure) / (exposure * max);
+      }
+      return total;
+    },
+  },
+  later: {
+    [ARCSINE]: 'its normalisation is 0.11 % off; held to the closed form in the test below',
+    'planned survey': 'prediction for a planned exposure (10) comes with forecasts',
+    'stars for limit': 'stars needed (10) come with forecasts',
+    'candidates ': 'undecided candidates (8.4) come with vetting',
+    'unresolved background': 'unresolved background (8.5) comes with candidates',
+    'detection density': 'measurement laws of detections (8.3) come with free indices',
+  },
+});
+
+test(`${ARCSINE} is the arcsine law, and has the shape of the file's values`, () => {
+  const check = readChecks('inference').find(({ name }) => name === ARCSINE);
+  if (check === undefined) throw new Error(`no check called ${ARCSINE}`);
+  const { completeness_per_star: completeness, fractions } = check.inputs as {
+    completeness_per_star: number[];
+    fractions: number[];
+  };
+  const density = jeffreysDensity(completeness, fractions);
+  const arcsine = fractions.map((f) => 1 / (Math.PI * Math.sqrt(f * (1 - f))));
+  expect(differences(density, arcsine, { rel: 1e-9 })).toEqual([]);
+  const ratios = (check.expected as number[]).map((value, i) => value / density[i]);
+  expect(
+    differences(
+      ratios,
+      ratios.map(() => ratios[0]),
+      { rel: 1e-9 },
+    ),
+  ).toEqual([]);
+  expect(Math.abs(ratios[0] - 1)).toBeLessThan(0.0012);
+});

@@ -1,0 +1,72 @@
+import {
+  equalTailedInterval,
+  highestDensityInterval,
+  poissonLowerLimit,
+  poissonUpperLimit,
+  ratePosterior,
+  upperLimit,
+  wilsonInterval,
+} from '@/lib/inference';
+import { runCheckFile } from './support/check-file';
+
+interface Count {
+  count: number;
+  level: number;
+}
+
+interface Binomial {
+  successes: number;
+  trials: number;
+  level: number;
+}
+
+/** Flat prior without an end and no background: the posterior of the expected count itself. */
+const flatPosterior = (count: number) =>
+  ratePosterior({
+    likelihood: 'mean-number',
+    completeness: Float64Array.of(1),
+    detectedStars: new Array<number>(count).fill(0),
+    prior: { law: 'gamma', shape: 1, rate: 0 },
+  });
+
+const shortest = ({ count, level }: Count) => highestDensityInterval(flatPosterior(count), level);
+const upper = ({ count, level }: Count) => upperLimit(flatPosterior(count), level);
+
+/**
+ * Equal-tailed interval of a fraction with a beta prior, every star fully seen. Astropy puts the
+ * lower end at 0 when nothing succeeded, where the equal-tailed one lies above it.
+ */
+const betaInterval =
+  (shape: number) =>
+  ({ successes, trials, level }: Binomial): [number, number] => {
+    const posterior = ratePosterior({
+      likelihood: 'host-fraction',
+      completeness: new Float64Array(trials).fill(1),
+      detectedStars: Array.from({ length: successes }, (_, star) => star),
+      prior: { law: 'beta', a: shape, b: shape },
+    });
+    const [low, high] = equalTailedInterval(posterior, level);
+    return [successes === 0 ? 0 : low, high];
+  };
+
+runCheckFile('intervals', {
+  runners: {
+    'Kraft-Burrows-Nousek n=0 b=0.0': shortest,
+    'Kraft-Burrows-Nousek n=3 b=0.0': shortest,
+    'credible upper limit with background n=0 b=0.0': upper,
+    'credible upper limit with background n=3 b=0.0': upper,
+    'astropy binomial wilson': ({ successes, trials, level }: Binomial) =>
+      wilsonInterval(successes, trials, level),
+    'astropy binomial flat': betaInterval(1),
+    'astropy binomial jeffreys': betaInterval(0.5),
+    'Gehrels table 1 upper': ({ counts, level }) =>
+      counts.map((k: number) => poissonUpperLimit(k, 1, level)),
+    'Gehrels table 2 lower': ({ counts, level }) =>
+      counts.map((k: number) => poissonLowerLimit(k, 1, level)),
+  },
+  later: {
+    'Kraft-Burrows-Nousek': 'unresolved background (8.5) comes with candidates',
+    'credible upper limit with background': 'unresolved background (8.5) comes with candidates',
+    'Feldman-Cousins': 'intervals with background (10) come with candidates',
+  },
+});
