@@ -16,10 +16,11 @@ export function splitHeading(heading: string): { name: string; unit: string | nu
   return { name: match[1], unit: unit === '' ? null : unit };
 }
 
-/** `"ra", "dec", ...`: the first headings, quoted. */
+/** `"ra", "dec" and 4 more`: the first headings, quoted. */
 export function listHeadings(headings: string[], most = 6): string {
   const shown = headings.slice(0, most).map((heading) => quoteFound(heading));
-  return headings.length > most ? `${shown.join(', ')}, ...` : shown.join(', ');
+  const rest = headings.length - most;
+  return rest > 0 ? `${shown.join(', ')} and ${rest} more` : shown.join(', ');
 }
 
 /** Edits (insert, remove, replace, swap of neighbours) between two texts, or Infinity beyond 2. */

@@ -11,6 +11,8 @@ export class TargetColumn {
   private readonly book: TargetBook;
   private readonly judged = new Map<string, string | typeof refused>();
   private readonly defaultTarget: string | null;
+  /** A search through all names for each unknown one would let a long file of strangers run for hours. */
+  private suggestionsLeft = 5;
 
   constructor(
     private readonly reading: TableReading,
@@ -60,7 +62,8 @@ export class TargetColumn {
     }
     const target = this.book.find(written);
     if (target !== null) return target;
-    const near = this.book.suggest(written);
+    const near = this.suggestionsLeft > 0 ? this.book.suggest(written) : null;
+    this.suggestionsLeft -= 1;
     this.reading.fault(place, {
       code: 'target-unknown',
       message: `${quoteFound(written)} is not a target of this survey`,
