@@ -1,0 +1,48 @@
+import type { Metadata } from 'next';
+import { notFound } from 'next/navigation';
+import { isFinished } from '@/app/newest-run';
+import { currentActor } from '@/app/session';
+import { ResultScreen } from '@/components/runs/result-screen';
+import type { Actor } from '@/lib/access/actor';
+import { NotFound } from '@/lib/errors';
+import { getAnalysis } from '@/lib/services/analyses';
+import { findPopulationsById } from '@/lib/services/populations';
+import { getRun } from '@/lib/services/runs';
+
+interface PageProps {
+  params: Promise<{ collaboration: string; analysis: string }>;
+  searchParams: Promise<Record<string, string | undefined>>;
+}
+
+export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
+  return { title: (await params).analysis };
+}
+
+export default async function AnalysisPage({ params, searchParams }: PageProps) {
+  const { collaboration, analysis: key } = await params;
+  const actor = await currentActor(collaboration);
+  const analysis = await findAnalysis(actor, key);
+  const finished = analysis.runs.find(isFinished);
+  const run = finished ? await getRun(actor, finished.id) : null;
+  const used = run?.inputs?.population.id;
+  const populations = used ? await findPopulationsById(actor, [used]) : undefined;
+  return (
+    <ResultScreen
+      key={analysis.key}
+      collaboration={actor.collaboration}
+      analysis={analysis}
+      run={run}
+      runPopulation={(used && populations?.get(used)) || null}
+      query={await searchParams}
+    />
+  );
+}
+
+async function findAnalysis(actor: Actor, key: string) {
+  try {
+    return await getAnalysis(actor, key);
+  } catch (reason) {
+    if (reason instanceof NotFound) notFound();
+    throw reason;
+  }
+}

@@ -1,0 +1,33 @@
+import type { Metadata } from 'next';
+import { newestRun } from '@/app/newest-run';
+import { currentActor } from '@/app/session';
+import { NewAnalysis } from '@/components/analyses/new-analysis';
+import { listPopulations } from '@/lib/services/populations';
+import { listSurveys } from '@/lib/services/surveys';
+
+export const metadata: Metadata = { title: 'New analysis' };
+
+export default async function NewAnalysisPage({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ collaboration: string }>;
+  searchParams: Promise<Record<string, string | undefined>>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const [surveys, { populations }, run, { population }] = await Promise.all([
+    listSurveys(actor),
+    listPopulations(actor),
+    newestRun(actor),
+    searchParams,
+  ]);
+  return (
+    <NewAnalysis
+      collaboration={actor.collaboration}
+      surveys={surveys}
+      populations={populations}
+      previewRun={run}
+      wanted={population}
+    />
+  );
+}

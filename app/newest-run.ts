@@ -1,0 +1,18 @@
+import type { Actor } from '@/lib/access/actor';
+import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import { listAnalyses } from '@/lib/services/analyses';
+import { getRun } from '@/lib/services/runs';
+
+export function isFinished(run: RunSummary): boolean {
+  return run.job.status === 'done' && run.limit !== null;
+}
+
+/** The run that finished last in the whole collaboration: its maps serve previews and estimates. */
+export async function newestRun(actor: Actor): Promise<RunView | null> {
+  const { analyses } = await listAnalyses(actor);
+  const finished = analyses
+    .flatMap((analysis) => analysis.runs)
+    .filter(isFinished)
+    .sort((a, b) => (b.finishedAt ?? '').localeCompare(a.finishedAt ?? ''));
+  return finished.length === 0 ? null : getRun(actor, finished[0].id);
+}
