@@ -131,38 +131,43 @@ interface NamePlace {
 }
 
 /** A name stands inside where its area is thick enough over the whole word, else at a leader. */
-function placeNames(layers: Layer[], x: Float64Array, y: (depth: number) => number, right: number) {
-  let leaders = 0;
-  return [...layers]
-    .reverse()
-    .map((layer): NamePlace => {
-      const { of, lower, upper } = layer;
-      const half = textWidth(of.name, 13) / 2 + 2;
-      const thickness = (at: number) => y(lower[at]) - y(upper[at]);
-      const thickest = of.depth.indexOf(Math.max(...of.depth));
-      const fits = x.every(
-        (px, at) =>
-          Math.abs(px - x[thickest]) > half ||
-          Math.min(y(lower[at]), y(lower[thickest])) - Math.max(y(upper[at]), y(upper[thickest])) >
-            13,
-      );
-      const place = {
-        layer,
-        x: x[thickest],
-        y: (y(lower[thickest]) + y(upper[thickest])) / 2,
-      };
-      if (fits && thickness(thickest) >= 17) return place;
-      const beside = Math.min(x.length - 1, thickest + Math.ceil(x.length / 16));
-      const row = 24 + 17 * leaders;
-      leaders += 1;
-      return {
-        layer,
-        x: x[beside],
-        y: (y(lower[beside]) + y(upper[beside])) / 2,
-        leader: { x: Math.min(x[beside] + 44 + 8 * leaders, right - 2 * half), y: row },
-      };
-    })
-    .reverse();
+function placeNames(
+  layers: Layer[],
+  x: Float64Array,
+  y: (depth: number) => number,
+  right: number,
+): NamePlace[] {
+  const top = layers.at(-1)?.upper;
+  const places = layers.map((layer): NamePlace & { fits: boolean } => {
+    const { of, lower, upper } = layer;
+    const half = textWidth(of.name, 13) / 2 + 2;
+    const thickest = of.depth.indexOf(Math.max(...of.depth));
+    const middle = (at: number) => (y(lower[at]) + y(upper[at])) / 2;
+    const isClear = x.every(
+      (px, at) =>
+        Math.abs(px - x[thickest]) > half ||
+        (y(lower[at]) > middle(thickest) + 6 && y(upper[at]) < middle(thickest) - 6),
+    );
+    const fits = isClear && y(lower[thickest]) - y(upper[thickest]) >= 17;
+    const at = fits ? thickest : Math.min(x.length - 1, thickest + Math.ceil(x.length / 16));
+    return { layer, x: x[at], y: middle(at), fits };
+  });
+  // Leaders that start further right end lower, so that none crosses another.
+  const led = places.filter(({ fits }) => !fits).sort((a, b) => a.x - b.x);
+  led.forEach((place, index) => {
+    const row = 24 + 17 * index;
+    const clear = lastWhere(x, (at) => top !== undefined && y(top[at]) < row + 8) ?? place.x;
+    const wide = textWidth(place.layer.of.name, 13);
+    place.leader = { x: Math.min(Math.max(clear, place.x) + 30, right - wide), y: row };
+  });
+  return places;
+}
+
+function lastWhere(values: Float64Array, holds: (index: number) => boolean) {
+  for (let index = values.length - 1; index >= 0; index -= 1) {
+    if (holds(index)) return values[index];
+  }
+  return undefined;
 }
 
 function LayerName({ place }: { place: NamePlace }) {

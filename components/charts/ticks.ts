@@ -73,6 +73,16 @@ export function linearTicks(min: number, max: number, lengthPx: number, spacingP
   return ticks;
 }
 
+/** Ticks that include both ends of a control's range, three to six of them, at round steps. */
+export function evenTicks(min: number, max: number): Tick[] {
+  const isRound = (value: number) => Math.abs(Number(value.toPrecision(2)) / value - 1) < 1e-6;
+  const parts = [3, 4, 2, 5].find((count) => isRound((max - min) / count)) ?? 2;
+  return Array.from({ length: parts + 1 }, (_, index) => {
+    const value = Number((min + ((max - min) * index) / parts).toPrecision(12));
+    return { value, isMajor: true, label: formatPlain(value) };
+  });
+}
+
 /** The unit stands behind the last number of an axis and nowhere else. */
 export function withUnit(ticks: Tick[], unit: string): Tick[] {
   const last = ticks.map((tick) => tick.label !== undefined).lastIndexOf(true);

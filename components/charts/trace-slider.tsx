@@ -5,7 +5,7 @@ import { type KeyboardEvent, type ReactNode, useId, useRef, useState } from 'rea
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { areaPath, linePath, valueAt } from './paths';
-import { linearTicks } from './ticks';
+import { evenTicks } from './ticks';
 import { useWidth } from './use-width';
 
 export interface TraceSliderProps {
@@ -78,7 +78,7 @@ export function TraceSlider(props: TraceSliderProps) {
   const isMoved = savedValue !== undefined && Math.abs(savedValue - value) > step / 2;
   const ticks =
     props.ticks?.map((tick) => ({ value: tick, isMajor: true, label: formatPlain(tick) })) ??
-    linearTicks(min, max, width - 2 * track.inset, 40);
+    evenTicks(min, max);
 
   const press = (event: KeyboardEvent<HTMLInputElement>) => {
     if (event.key === 'Escape') {

@@ -1,0 +1,213 @@
+'use client';
+
+import { quantile, scaleLinear, scaleLog } from 'd3';
+import { memo, useMemo } from 'react';
+import { formatPlain, formatSignificant } from '@/lib/quantities/display';
+import { BottomAxis, LeftAxis } from './axes';
+import { ChartFigure, type ChartTable } from './chart-figure';
+import { bandPath, linePath, valueAt } from './paths';
+import { linearTicks, logTicks, withUnit } from './ticks';
+import { useWidth } from './use-width';
+
+export interface NamedContrastCurve {
+  name: string;
+  /** Increasing [arcsec]. */
+  separationArcsec: Float64Array;
+  /** Fainter than the star by so many magnitudes, shape [separation]. */
+  contrastMag: Float64Array;
+}
+
+export interface ContrastChartProps {
+  curves: NamedContrastCurve[];
+  /** Name of the curve that is drawn in ink. */
+  selected?: string;
+  /** Number of sigma that the contrast is quoted at; the axis says so. */
+  nSigma?: number;
+  height?: number;
+}
+
+const margin = { left: 46, right: 20, top: 12, bottom: 46 };
+const samples = 60;
+
+/** All curves thin, the median with its 68 % band, the selected one in ink; contrast grows downwards. */
+export function ContrastChart({ curves, selected, nSigma, height }: ContrastChartProps) {
+  const [measure, width] = useWidth<HTMLDivElement>(420);
+  const total = height ?? 300;
+  const domain = useMemo(() => contrastDomain(curves), [curves]);
+  const summary = useMemo(() => summarise(curves, domain.separation), [curves, domain]);
+  const chosen = curves.find((curve) => curve.name === selected);
+  const frame = {
+    left: margin.left,
+    right: width - margin.right,
+    top: margin.top,
+    bottom: total - margin.bottom,
+  };
+  const x = scaleLog(domain.separation, [frame.left, frame.right]);
+  const y = scaleLinear(domain.contrast, [frame.top, frame.bottom]);
+  const contrastName =
+    nSigma === undefined ? 'contrast, mag' : `contrast at ${formatPlain(nSigma)}\u2009σ, mag`;
+  const xTicks = logTicks(...domain.separation, frame.right - frame.left);
+
+  return (
+    <ChartFigure
+      label={contrastSentence(curves, summary, chosen)}
+      width={width}
+      height={total}
+      measure={measure}
+      tables={() => [contrastTable(summary, chosen)]}
+    >
+      <LeftAxis
+        ticks={linearTicks(...domain.contrast, frame.bottom - frame.top, 40).filter(
+          (tick) => tick.isMajor,
+        )}
+        scale={y}
+        x={frame.left}
+        y0={frame.bottom}
+        y1={frame.top}
+        gridTo={frame.right}
+      />
+      <ThinCurves curves={curves} domain={domain} frame={frame} />
+      {curves.length > 2 && (
+        <path className="band" d={bandPath(summary.separation, summary.low, summary.high, x, y)} />
+      )}
+      {curves.length > 1 && (
+        <path className="median-curve" d={linePath(summary.separation, summary.median, x, y)} />
+      )}
+      {chosen && (
+        <>
+          <path
+            className="chosen-curve"
+            d={linePath(chosen.separationArcsec, chosen.contrastMag, x, y)}
+          />
+          <text className="bold page-halo" x={frame.right} y={frame.bottom - 10} textAnchor="end">
+            {chosen.name}
+          </text>
+        </>
+      )}
+      <text className="quiet page-halo" x={frame.right} y={frame.top + 8} textAnchor="end">
+        {contrastName}
+      </text>
+      {curves.length > 2 && (
+        <text className="page-halo" x={frame.right} y={frame.top + 28} textAnchor="end">
+          median, 68{'\u2009'}% band
+        </text>
+      )}
+      <BottomAxis
+        ticks={withUnit(xTicks, '″')}
+        scale={x}
+        y={frame.bottom}
+        x0={frame.left}
+        x1={frame.right}
+        name="angular separation"
+      />
+    </ChartFigure>
+  );
+}
+
+interface Domain {
+  separation: [number, number];
+  contrast: [number, number];
+}
+
+const ThinCurves = memo(function ThinCurves({
+  curves,
+  domain,
+  frame,
+}: {
+  curves: NamedContrastCurve[];
+  domain: Domain;
+  frame: { left: number; right: number; top: number; bottom: number };
+}) {
+  const x = scaleLog(domain.separation, [frame.left, frame.right]);
+  const y = scaleLinear(domain.contrast, [frame.top, frame.bottom]);
+  return curves.map((curve) => (
+    <path
+      key={curve.name}
+      className="thin-curve"
+      d={linePath(curve.separationArcsec, curve.contrastMag, x, y)}
+    />
+  ));
+});
+
+function contrastDomain(curves: NamedContrastCurve[]): Domain {
+  const separations = curves.flatMap(({ separationArcsec: it }) => [it[0], it[it.length - 1]]);
+  const contrasts = curves
+    .flatMap(({ contrastMag }) => Array.from(contrastMag))
+    .filter(Number.isFinite);
+  if (separations.length === 0) return { separation: [0.1, 10], contrast: [0, 16] };
+  const [low, high] = [Math.min(...separations), Math.max(...separations)];
+  return {
+    separation: [low / 1.08, high * 1.08],
+    contrast: [Math.floor(Math.min(...contrasts)), Math.ceil(Math.max(...contrasts))],
+  };
+}
+
+interface Summary {
+  separation: Float64Array;
+  median: Float64Array;
+  low: Float64Array;
+  high: Float64Array;
+}
+
+/** At each separation, over the curves that reach it. */
+function summarise(curves: NamedContrastCurve[], [from, to]: [number, number]): Summary {
+  const separation = Float64Array.from(
+    { length: samples },
+    (_, index) => from * (to / from) ** (index / (samples - 1)),
+  );
+  const at = (share: number) =>
+    separation.map((arcsec) => {
+      const values = curves
+        .filter(({ separationArcsec: it }) => it[0] <= arcsec && it[it.length - 1] >= arcsec)
+        .map((curve) => valueAt(curve.separationArcsec, curve.contrastMag, arcsec));
+      return quantile(values, share) ?? Number.NaN;
+    });
+  return { separation, median: at(0.5), low: at(0.16), high: at(0.84) };
+}
+
+function contrastSentence(
+  curves: NamedContrastCurve[],
+  summary: Summary,
+  chosen: NamedContrastCurve | undefined,
+): string {
+  const at = [0.2, 0.5, 1, 2].filter(
+    (arcsec) => arcsec >= summary.separation[0] && arcsec <= summary.separation[samples - 1],
+  );
+  const say = (xs: Float64Array, ys: Float64Array) =>
+    at
+      .map((arcsec) => [arcsec, valueAt(xs, ys, arcsec)])
+      .filter(([, mag]) => Number.isFinite(mag))
+      .map(([arcsec, mag]) => `${formatSignificant(mag, 3)} mag at ${formatPlain(arcsec)} arcsec`)
+      .join(', ');
+  const head = `Contrast curves of ${curves.length} ${curves.length === 1 ? 'target' : 'targets'}`;
+  const median = curves.length > 1 ? `; median ${say(summary.separation, summary.median)}` : '';
+  const own = chosen ? `; ${chosen.name} ${say(chosen.separationArcsec, chosen.contrastMag)}` : '';
+  return `${head}${median}${own}`;
+}
+
+function contrastTable(summary: Summary, chosen: NamedContrastCurve | undefined): ChartTable {
+  const mag = (value: number) => (Number.isFinite(value) ? value.toFixed(2) : '–');
+  const rows = Array.from({ length: 12 }, (_, index) =>
+    Math.round((index * (samples - 1)) / 11),
+  ).map((index) => {
+    const arcsec = summary.separation[index];
+    const cells = [summary.low[index], summary.median[index], summary.high[index]];
+    if (chosen) {
+      const { separationArcsec: it } = chosen;
+      const reaches = it[0] <= arcsec && it[it.length - 1] >= arcsec;
+      cells.push(reaches ? valueAt(it, chosen.contrastMag, arcsec) : Number.NaN);
+    }
+    return [formatPlain(arcsec, 3), ...cells.map(mag)];
+  });
+  return {
+    caption: 'Contrast, mag',
+    columns: [
+      'separation, arcsec',
+      '16\u2009%',
+      'median',
+      '84\u2009%',
+      ...(chosen ? [chosen.name] : []),
+    ],
+    rows,
+  };
+}

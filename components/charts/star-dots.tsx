@@ -1,0 +1,180 @@
+'use client';
+
+import { scaleLinear } from 'd3';
+import { useMemo } from 'react';
+import { formatPercent, formatSignificant } from '@/lib/quantities/display';
+import { BottomAxis } from './axes';
+import { ChartFigure, type ChartTable } from './chart-figure';
+import { seriesColour } from './series';
+import { linearTicks, withUnit } from './ticks';
+import { useWidth } from './use-width';
+
+export interface StarDot {
+  name: string;
+  /** Its map averaged over the population, 0 to 1. */
+  probability: number;
+  /** Place of its survey in the collaboration; undefined for a star in several, drawn in ink. */
+  seriesIndex?: number;
+  /** Hosts a counted detection: ringed, with this name beside it. */
+  hosts?: string;
+}
+
+export interface StarDotsProps {
+  stars: StarDot[];
+  selected?: string;
+  onSelect?(name: string): void;
+  height?: number;
+}
+
+const margin = { left: 14, right: 20, bottom: 48 };
+const spacing = 11.8;
+
+interface Placed extends StarDot {
+  x: number;
+  row: number;
+}
+
+/** Each dot at its own place along the axis, in the lowest row where it touches no other. */
+export function stackDots(stars: StarDot[], x: (value: number) => number, apart: number): Placed[] {
+  const rowEnds: number[] = [];
+  return [...stars]
+    .sort((a, b) => a.probability - b.probability)
+    .map((star) => {
+      const at = x(star.probability);
+      let row = rowEnds.findIndex((end) => at - end >= apart);
+      if (row < 0) row = rowEnds.length;
+      rowEnds[row] = at;
+      return { ...star, x: at, row };
+    });
+}
+
+/** Probability at which half of the sum over the stars lies to the right, and how many stars do. */
+export function halfOfTheSum(stars: StarDot[]): { probability: number; stars: number } {
+  const sorted = stars.map(({ probability }) => probability).sort((a, b) => b - a);
+  const half = sorted.reduce((sum, value) => sum + value, 0) / 2;
+  let reached = 0;
+  for (let index = 0; index < sorted.length; index += 1) {
+    reached += sorted[index];
+    if (reached >= half) return { probability: sorted[index], stars: index + 1 };
+  }
+  return { probability: 0, stars: sorted.length };
+}
+
+/** One dot a star: x is its probability of detection, stacked upwards. */
+export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsProps) {
+  const [measure, width] = useWidth<HTMLDivElement>(880);
+  const bottom = height - margin.bottom;
+  const max = Math.max(0.05, ...stars.map(({ probability }) => probability));
+  const half = useMemo(() => halfOfTheSum(stars), [stars]);
+  const layout = useMemo(() => {
+    const x = scaleLinear([0, max], [margin.left, width - margin.right]);
+    let apart = spacing;
+    let placed = stackDots(stars, x, apart);
+    const rows = () => Math.max(1, ...placed.map(({ row }) => row + 1));
+    // Smaller dots take fewer rows and less height: shrink until the tallest stack fits.
+    while (rows() * apart > bottom - 40 && apart > 3) {
+      apart *= 0.85;
+      placed = stackDots(stars, x, apart);
+    }
+    return { x, placed, apart };
+  }, [stars, max, width, bottom]);
+  const { x, placed, apart } = layout;
+  const radius = apart * 0.45;
+  const y = (row: number) => bottom - radius - 2 - row * apart;
+  const ticks = withUnit(linearTicks(0, 100 * max, width - 34, 70), '\u2009%');
+  const isNarrow = width < 520;
+
+  return (
+    <ChartFigure
+      label={`Detection probability of ${stars.length} stars: ${half.stars} of them, from ${formatPercent(half.probability)} up, carry half of the sum`}
+      width={width}
+      height={height}
+      measure={measure}
+      tables={() => [starTable(stars)]}
+    >
+      <line
+        className="range-line"
+        x1={x(half.probability) - radius - 1}
+        x2={x(half.probability) - radius - 1}
+        y1={8}
+        y2={bottom}
+      />
+      <text
+        className="bold page-halo"
+        x={x(half.probability) - 9 - radius}
+        y={18}
+        textAnchor={x(half.probability) > 140 ? 'end' : 'start'}
+      >
+        {half.stars} stars to the right
+      </text>
+      <text
+        className="page-halo"
+        x={x(half.probability) - 9 - radius}
+        y={35}
+        textAnchor={x(half.probability) > 140 ? 'end' : 'start'}
+      >
+        carry half of the sum
+      </text>
+      {placed.map((star) => (
+        // biome-ignore lint/a11y/noStaticElementInteractions: a shortcut for the pointer; the table of stars beside the chart does the same by keyboard
+        <circle
+          key={star.name}
+          className="star-dot"
+          cx={star.x}
+          cy={y(star.row)}
+          r={radius}
+          style={{
+            fill: star.seriesIndex === undefined ? 'var(--ink)' : seriesColour(star.seriesIndex),
+            cursor: onSelect ? 'pointer' : undefined,
+          }}
+          onClick={onSelect && (() => onSelect(star.name))}
+        >
+          <title>{`${star.name}, ${formatPercent(star.probability)}`}</title>
+        </circle>
+      ))}
+      {placed
+        .filter((star) => star.hosts !== undefined || star.name === selected)
+        .map((star, index) => {
+          const goesLeft = star.x > width - 150;
+          const row = Math.min(y(star.row) - 40, 62 + 18 * index);
+          return (
+            <g key={star.name}>
+              <circle className="ring" cx={star.x} cy={y(star.row)} r={radius + 2.8} />
+              <path
+                className="leader"
+                d={`M${star.x},${y(star.row) - radius - 4}L${star.x + (goesLeft ? -6 : 6)},${row + 4}`}
+              />
+              <text
+                className="page-halo"
+                x={star.x + (goesLeft ? -8 : 8)}
+                y={row}
+                textAnchor={goesLeft ? 'end' : 'start'}
+              >
+                {star.hosts === undefined ? star.name : `hosts ${star.hosts}`}
+              </text>
+            </g>
+          );
+        })}
+      <BottomAxis
+        ticks={ticks}
+        scale={(percent) => x(percent / 100)}
+        y={bottom}
+        x0={margin.left}
+        x1={width - margin.right}
+        isFirstAtEdge
+        isLastAtEdge
+        name={isNarrow ? 'detection probability' : 'detection probability under the population'}
+      />
+    </ChartFigure>
+  );
+}
+
+function starTable(stars: StarDot[]): ChartTable {
+  return {
+    caption: 'Stars by detection probability, highest first',
+    columns: ['star', 'detection probability, %', 'hosts'],
+    rows: [...stars]
+      .sort((a, b) => b.probability - a.probability)
+      .map((star) => [star.name, formatSignificant(100 * star.probability, 3), star.hosts ?? '–']),
+  };
+}
