@@ -9,6 +9,7 @@ const environment = z.object({
   MAILBOX_URL: z.string().optional(),
   MAIL_FROM: z.string().default('rarebound@localhost'),
   RAREBOUND_DATA_DIR: z.string().default('.data'),
+  RAREBOUND_BUNDLE_DIR: z.string().default('dist'),
   RAREBOUND_WORKER_THREADS: z.coerce.number().int().min(1).optional(),
   /** 'yes' when a proxy of ours stands before the server and writes X-Forwarded-For. */
   RAREBOUND_BEHIND_PROXY: z.enum(['yes', 'no']).default('no'),
@@ -24,6 +25,8 @@ export interface Config {
   mailboxUrl: string | undefined;
   mailFrom: string;
   dataDirectory: string;
+  /** Where the bundled worker and thread entries lie. */
+  bundleDirectory: string;
   workerThreads: number | undefined;
   isBehindProxy: boolean;
   isProduction: boolean;
@@ -47,6 +50,7 @@ export function config(): Config {
     mailboxUrl: env.MAILBOX_URL,
     mailFrom: env.MAIL_FROM,
     dataDirectory: env.RAREBOUND_DATA_DIR,
+    bundleDirectory: env.RAREBOUND_BUNDLE_DIR,
     workerThreads: env.RAREBOUND_WORKER_THREADS,
     isBehindProxy: env.RAREBOUND_BEHIND_PROXY === 'yes',
     isProduction: env.NODE_ENV === 'production',

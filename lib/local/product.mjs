@@ -44,6 +44,7 @@ export function productEnvironment(/** @type {Product} */ product) {
     MAIL_URL: mailUrl,
     ...(mailboxUrl === undefined ? {} : { MAILBOX_URL: mailboxUrl }),
     RAREBOUND_DATA_DIR: product.folder,
+    RAREBOUND_BUNDLE_DIR: product.bundleFolder,
     NEXT_TELEMETRY_DISABLED: '1',
   };
 }

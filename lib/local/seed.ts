@@ -131,7 +131,7 @@ async function importSurvey(
 }
 
 function startWorker(): ChildProcess {
-  return spawn(process.execPath, ['--enable-source-maps', path.resolve('dist/workers/main.js')], {
+  return spawn(process.execPath, ['--enable-source-maps', path.resolve(config().bundleDirectory, 'workers/main.js')], {
     env: { ...process.env },
     stdio: ['ignore', 'ignore', 'inherit'],
   });

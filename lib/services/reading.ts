@@ -1,5 +1,6 @@
 import path from 'node:path';
 import { Piscina } from 'piscina';
+import { config } from '@/lib/config';
 import { InputError } from '@/lib/errors';
 import type { ReadContext, ReadResult } from '@/lib/formats';
 
@@ -11,7 +12,7 @@ const holder = globalThis as typeof globalThis & { rareboundReaders?: Piscina };
 
 function readers(): Piscina {
   holder.rareboundReaders ??= new Piscina({
-    filename: path.resolve('dist/workers/compute/read-upload.js'),
+    filename: path.resolve(config().bundleDirectory, 'workers/compute/read-upload.js'),
     minThreads: 0,
     maxThreads: 2,
     idleTimeout: 30_000,
