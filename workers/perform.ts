@@ -56,7 +56,14 @@ export async function perform(
     log('info', 'job done', { jobId, attempt: attempt.number });
   } catch (error) {
     clearInterval(renewal);
-    await conclude(attempt, stop.signal.aborted ? stop.signal.reason : error);
+    await conclude(attempt, stop.signal.aborted ? stop.signal.reason : error).catch(
+      (failure: unknown) => {
+        if (failure instanceof LeaseLost) {
+          log('warning', 'late result refused', { jobId, attempt: attempt.number });
+        }
+        throw failure;
+      },
+    );
   } finally {
     clearInterval(renewal);
     shutdown.removeEventListener('abort', onShutdown);
@@ -77,10 +84,7 @@ function keepAlive(attempt: Attempt, stop: AbortController): void {
 
 async function conclude(attempt: Attempt, error: unknown): Promise<void> {
   const { jobId } = attempt;
-  if (error instanceof LeaseLost) {
-    log('warning', 'late result refused', { jobId, attempt: attempt.number });
-    throw error;
-  }
+  if (error instanceof LeaseLost) throw error;
   if (error instanceof Stopped && error.why === 'cancelled') {
     const isStopped = await inTransaction((transaction) => stopCancelled(transaction, attempt));
     log('info', isStopped ? 'job cancelled' : 'job goes on', { jobId });

@@ -1,7 +1,7 @@
-import { transferableSymbol, valueSymbol } from 'piscina';
+import { move, transferableSymbol, valueSymbol } from 'piscina';
 
 /** A thread's answer whose buffers move to the main thread instead of being copied. */
 export function moved<Value>(value: Value, buffers: ArrayBufferLike[]): Value {
   const answer = { [transferableSymbol]: buffers, [valueSymbol]: value };
-  return answer as unknown as Value;
+  return move(answer as never) as unknown as Value;
 }

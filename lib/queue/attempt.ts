@@ -72,7 +72,8 @@ export async function renew(attempt: Attempt): Promise<{ cancelRequested: boolea
 
 /**
  * Locks the job's row for the rest of the transaction: what is written beside it is written by the
- * attempt that holds the job, or not at all.
+ * attempt that holds the job, or not at all. A process that falls asleep in such a transaction
+ * would keep the next attempt waiting, so the server ends it after the length of a lease.
  *
  * @throws LeaseLost
  */
@@ -81,9 +82,10 @@ export async function hold(
   attempt: Attempt,
 ): Promise<{ cancelRequested: boolean; payload: JobRow['payload'] }> {
   const [row] = await select<{ cancel: boolean; payload: JobRow['payload'] }>(
-    `select cancel_requested_at is not null as cancel, payload from job
+    `select cancel_requested_at is not null as cancel, payload,
+       set_config('idle_in_transaction_session_timeout', $3, true) as patience from job
      where id = $1 and attempt_token = $2 and status = 'running' for update`,
-    [attempt.jobId, attempt.token],
+    [attempt.jobId, attempt.token, `${LEASE_S}s`],
     transaction,
   );
   if (!row) throw new LeaseLost(attempt.jobId);

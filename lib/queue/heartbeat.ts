@@ -47,7 +47,10 @@ export function buryDeadWorkers(): Promise<string[]> {
     await select('select queue.force_unlock_workers($1::text[])', [ids], transaction);
     await select(
       `update job set lease_until = clock_timestamp() - interval '1 ms'
-       where status = 'running' and worker_id = any($1) returning id`,
+       where id in (
+         select id from job where status = 'running' and worker_id = any($1)
+         for update skip locked)
+       returning id`,
       [ids],
       transaction,
     );

@@ -14,9 +14,9 @@ import {
   upperLimit,
   viewPopulation,
 } from '@/lib/inference';
+import { priorFor } from '@/lib/inference/prior-for';
 import { type Population, populationWeights } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
-import { priorFor } from '../prior-for';
 
 export interface AnswerRunInput {
   /** Shape [star, mass, semiMajorAxis], round(65535 C), in the order of the stars. */

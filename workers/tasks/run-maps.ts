@@ -3,7 +3,6 @@ import { hold } from '@/lib/queue/attempt';
 import { listFirst } from '@/lib/queue/preconditions';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import {
-  type CompletenessMap,
   combineDeepest,
   combineIndependent,
   ENGINE_VERSION,
@@ -11,7 +10,7 @@ import {
 } from '@/lib/sensitivity';
 import { CompletenessMapRow, inTransaction } from '@/models';
 import { digestOf } from '@/models/digest';
-import { unpackMap } from '@/models/map-values';
+import { mapOfRow } from '@/models/map-on-grid';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import type { Work } from '../perform';
@@ -178,14 +177,6 @@ async function combinedMap({ star, digest, inputs, rule }: Combination): Promise
     flagged.has(combined.massMjup[i]),
   );
   return { ...combined, digest, inputs, report: { flaggedMassNodes } };
-}
-
-export function mapOfRow(row: CompletenessMapRow): CompletenessMap {
-  return {
-    massMjup: Float64Array.from(row.massMjup),
-    semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
-    completeness: unpackMap(row.nodeValues),
-  };
 }
 
 /** Masses at which a map rests on the edge of its cooling relation or beyond it. */

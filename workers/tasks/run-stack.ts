@@ -1,8 +1,9 @@
 import { type Population, populationWeights } from '@/lib/population';
 import type { RunInputs } from '@/lib/schemas/runs';
-import { encodeMap, type MapGrid, regridNodes } from '@/lib/sensitivity';
+import type { MapGrid } from '@/lib/sensitivity';
 import { CompletenessMapRow } from '@/models';
-import { flaggedMasses, type MapDigests, mapOfRow } from './run-maps';
+import { valuesOnGrid } from '@/models/map-on-grid';
+import { flaggedMasses, type MapDigests } from './run-maps';
 import type { SampleStar } from './run-sample';
 
 /** Maps read at once: some megabytes. */
@@ -66,11 +67,6 @@ export async function stackMaps(
     });
   }
   return { maps, stars, reach, ...share.means() };
-}
-
-function valuesOnGrid(row: CompletenessMapRow, grid: MapGrid): Uint16Array {
-  const map = mapOfRow(row);
-  return encodeMap(regridNodes(map, grid).map.completeness);
 }
 
 function reachOf(grid: MapGrid): MapStack['reach'] {

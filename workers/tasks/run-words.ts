@@ -26,17 +26,14 @@ const thresholds = {
 const UPLOADED = 'as in the uploaded maps';
 
 /** One text where all surveys agree, else each with its surveys. */
-function perSurvey(
-  sample: Sample,
-  describe: (survey: Sample['surveys'][number]) => string,
-): string {
+function perSurvey(sample: Sample, wordsOf: (survey: Sample['surveys'][number]) => string): string {
   const users = new Map<string, string[]>();
   for (const survey of sample.surveys) {
     const maps = sample.stars
       .flatMap(({ entries }) => entries)
       .filter((entry) => entry.survey === survey);
     const texts = [
-      ...(maps.some(({ map }) => map.origin === 'computed') ? [describe(survey)] : []),
+      ...(maps.some(({ map }) => map.origin === 'computed') ? [wordsOf(survey)] : []),
       ...(maps.some(({ map }) => map.origin === 'uploaded') ? [UPLOADED] : []),
     ];
     for (const text of texts) users.set(text, [...(users.get(text) ?? []), survey.row.name]);

@@ -1,4 +1,4 @@
-import type { Likelihood, RatePrior } from '@/lib/inference';
+import type { Likelihood, RatePrior } from './contract';
 
 /**
  * The same prior for the other quantity, for the table that shows both: cut at 1 for a fraction.

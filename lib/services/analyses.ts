@@ -1,0 +1,238 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import type { z } from 'zod';
+import type { Actor } from '@/lib/access/actor';
+import { demand, may } from '@/lib/access/permissions';
+import { Conflict, InputError, NotFound } from '@/lib/errors';
+import {
+  type AnalysisRecipe,
+  type AnalysisView,
+  analysisRecipeSchema,
+  type copyAnalysisSchema,
+  type createAnalysisSchema,
+  type updateAnalysisSchema,
+} from '@/lib/schemas/analyses';
+import type { RunSummary } from '@/lib/schemas/runs';
+import {
+  AnalysisRow,
+  database,
+  inTransaction,
+  PersonRow,
+  PopulationRow,
+  RunRow,
+  SurveyRow,
+} from '@/models';
+import { canonicalJson } from '@/models/digest';
+import { findAnalysis } from './analysis-lookup';
+import { recordAudit } from './audit';
+import { listPopulations } from './populations';
+import { summariseRuns } from './runs';
+
+const LONGEST_NAME = 120;
+
+const isOwn = (actor: Actor, row: AnalysisRow) => row.createdBy === actor.personId;
+
+/** Where an analysis stands, from its newest run that nobody stopped. */
+function stateOf(
+  recipe: AnalysisRecipe,
+  runs: RunSummary[],
+  newestRecipe: AnalysisRecipe | undefined,
+): AnalysisView['state'] {
+  const newest = runs.find(({ job }) => job.status !== 'cancelled');
+  if (!newest) return 'draft';
+  if (newest.job.status === 'failed') return 'failed';
+  if (newest.job.status !== 'done') return 'running';
+  const isSame = newestRecipe && canonicalJson(newestRecipe) === canonicalJson(recipe);
+  return isSame ? 'run' : 'changed';
+}
+
+async function describeAnalyses(actor: Actor, rows: AnalysisRow[]): Promise<AnalysisView[]> {
+  if (rows.length === 0) return [];
+  const { collaborationId } = actor;
+  const ids = rows.map(({ id }) => id);
+  const parentIds = rows.flatMap(({ parentId }) => parentId ?? []);
+  const makerIds = rows.flatMap(({ createdBy }) => createdBy ?? []);
+  const [{ populations }, surveys, parents, makers, runs, recipes] = await Promise.all([
+    listPopulations(actor),
+    SurveyRow.findAll({ where: { collaborationId }, order: [['position', 'ASC']] }),
+    AnalysisRow.findAll({ where: { id: parentIds } }),
+    PersonRow.findAll({ where: { id: makerIds } }),
+    summariseRuns(ids),
+    RunRow.findAll({ attributes: ['id', 'recipe'], where: { analysisId: ids } }),
+  ]);
+  const recipeOf = new Map(recipes.map((run) => [run.id, run.recipe]));
+  return rows.map((row) => {
+    const population = populations.find(({ id }) => id === row.recipe.populationId);
+    if (!population) throw new NotFound('population');
+    const own = runs.get(row.id) ?? [];
+    const parent = parents.find(({ id }) => id === row.parentId);
+    const newest = own.find(({ job }) => job.status !== 'cancelled');
+    const item = { isOwn: isOwn(actor, row) };
+    return {
+      id: row.id,
+      key: `A-${row.number}`,
+      number: row.number,
+      name: row.name,
+      recipe: row.recipe,
+      population,
+      surveys: surveys
+        .filter(({ id }) => row.recipe.surveyIds.includes(id))
+        .map(({ id, slug, name, position }) => ({ id, slug, name, position })),
+      parent: parent ? `A-${parent.number}` : null,
+      createdBy: makers.find(({ id }) => id === row.createdBy)?.name ?? null,
+      createdAt: row.createdAt.toISOString(),
+      updatedAt: row.updatedAt.toISOString(),
+      runs: own,
+      state: stateOf(row.recipe, own, newest && recipeOf.get(newest.id)),
+      can: {
+        run: may(actor, 'run-analysis', item),
+        change: may(actor, 'save-analysis', item),
+        remove: may(actor, 'remove-analysis', item) && own.length === 0,
+        copy: may(actor, 'copy-analysis'),
+      },
+    };
+  });
+}
+
+/** All analyses, the newest first. */
+export async function listAnalyses(actor: Actor): Promise<{ analyses: AnalysisView[] }> {
+  demand(actor, 'read');
+  const rows = await AnalysisRow.findAll({
+    where: { collaborationId: actor.collaborationId },
+    order: [['number', 'DESC']],
+  });
+  return { analyses: await describeAnalyses(actor, rows) };
+}
+
+export async function getAnalysis(actor: Actor, key: string): Promise<AnalysisView> {
+  const [view] = await describeAnalyses(actor, [await findAnalysis(actor, key)]);
+  return view;
+}
+
+/** Refuses a recipe that names what this collaboration does not have. */
+async function checkRecipe(
+  actor: Actor,
+  recipe: AnalysisRecipe,
+  transaction: Transaction,
+): Promise<void> {
+  const { collaborationId } = actor;
+  const surveyIds = [...new Set(recipe.surveyIds)];
+  if (surveyIds.length < recipe.surveyIds.length) {
+    throw new InputError({
+      code: 'repeated',
+      column: 'recipe.surveyIds',
+      found: 'a survey twice',
+      expected: 'each survey once',
+    });
+  }
+  const where = { collaborationId, id: surveyIds };
+  if ((await SurveyRow.count({ where, transaction })) < surveyIds.length) {
+    throw new NotFound('survey');
+  }
+  const population = await PopulationRow.count({
+    where: { collaborationId, id: recipe.populationId },
+    transaction,
+  });
+  if (population === 0) throw new NotFound('population');
+}
+
+/** The next number of the collaboration, under a lock on its row. */
+async function nextNumber(collaborationId: string, transaction: Transaction): Promise<number> {
+  await database().query('select id from collaboration where id = $1 for update', {
+    bind: [collaborationId],
+    type: QueryTypes.SELECT,
+    transaction,
+  });
+  const last = await AnalysisRow.max<number, AnalysisRow>('number', {
+    where: { collaborationId },
+    transaction,
+  });
+  return (last ?? 0) + 1;
+}
+
+async function addAnalysis(
+  actor: Actor,
+  fields: { name: string; recipe: AnalysisRecipe; parent: AnalysisRow | null },
+): Promise<AnalysisView> {
+  const row = await inTransaction(async (transaction) => {
+    await checkRecipe(actor, fields.recipe, transaction);
+    const number = await nextNumber(actor.collaborationId, transaction);
+    const created = await AnalysisRow.create(
+      {
+        collaborationId: actor.collaborationId,
+        number,
+        name: fields.name,
+        recipe: fields.recipe,
+        parentId: fields.parent?.id ?? null,
+        createdBy: actor.personId,
+      },
+      { transaction },
+    );
+    const item = { kind: 'analysis', id: created.id };
+    const action = fields.parent ? 'copy-analysis' : 'save-analysis';
+    const summary = fields.parent
+      ? `copied A-${fields.parent.number} to A-${number}`
+      : `began the analysis A-${number}`;
+    await recordAudit(actor, action, item, summary, transaction);
+    return created;
+  });
+  const [view] = await describeAnalyses(actor, [row]);
+  return view;
+}
+
+export function createAnalysis(
+  actor: Actor,
+  input: z.output<typeof createAnalysisSchema>,
+): Promise<AnalysisView> {
+  demand(actor, 'save-analysis', { isOwn: true });
+  return addAnalysis(actor, { ...input, parent: null });
+}
+
+/** A draft of one's own that remembers where it came from. */
+export async function copyAnalysis(
+  actor: Actor,
+  key: string,
+  input: z.output<typeof copyAnalysisSchema>,
+): Promise<AnalysisView> {
+  demand(actor, 'copy-analysis');
+  const parent = await findAnalysis(actor, key);
+  const ending = input.detections === 'none' ? ', zero detections' : ', copy';
+  const name = input.name ?? `${parent.name.slice(0, LONGEST_NAME - ending.length)}${ending}`;
+  const recipe = analysisRecipeSchema.parse({
+    ...parent.recipe,
+    ...(input.detections && { detections: input.detections }),
+  });
+  return addAnalysis(actor, { name, recipe, parent });
+}
+
+/** Changes name or recipe; finished runs keep the recipe that they were made with. */
+export async function updateAnalysis(
+  actor: Actor,
+  key: string,
+  input: z.output<typeof updateAnalysisSchema>,
+): Promise<AnalysisView> {
+  const row = await findAnalysis(actor, key);
+  demand(actor, 'save-analysis', { isOwn: isOwn(actor, row) });
+  await inTransaction(async (transaction) => {
+    if (input.recipe) await checkRecipe(actor, input.recipe, transaction);
+    await row.update(input, { transaction });
+    const item = { kind: 'analysis', id: row.id };
+    await recordAudit(actor, 'save-analysis', item, `changed A-${row.number}`, transaction);
+  });
+  return getAnalysis(actor, key);
+}
+
+/** Deletes a draft; an analysis with runs is somebody's evidence and stays. */
+export async function removeAnalysis(actor: Actor, key: string): Promise<void> {
+  const row = await findAnalysis(actor, key);
+  demand(actor, 'remove-analysis', { isOwn: isOwn(actor, row) });
+  await inTransaction(async (transaction) => {
+    await row.reload({ transaction, lock: transaction.LOCK.UPDATE });
+    const runs = await RunRow.count({ where: { analysisId: row.id }, transaction });
+    const copies = await AnalysisRow.count({ where: { parentId: row.id }, transaction });
+    if (runs > 0) throw new Conflict(`A-${row.number} has runs; only a draft is deleted`);
+    if (copies > 0) throw new Conflict(`A-${row.number} was copied; its copies name it`);
+    await row.destroy({ transaction });
+    const item = { kind: 'analysis', id: row.id };
+    await recordAudit(actor, 'remove-analysis', item, `deleted A-${row.number}`, transaction);
+  });
+}

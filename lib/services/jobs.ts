@@ -1,0 +1,123 @@
+import { QueryTypes } from 'sequelize';
+import type { Actor } from '@/lib/access/actor';
+import { demand } from '@/lib/access/permissions';
+import { Conflict, NotFound } from '@/lib/errors';
+import { requestCancel, retry } from '@/lib/queue/cancel';
+import { timeLeftS } from '@/lib/queue/pace';
+import { idSchema } from '@/lib/schemas/common';
+import type { JobView } from '@/lib/schemas/jobs';
+import { AnalysisRow, database, inTransaction, JobRow, RunRow, SurveyRow } from '@/models';
+import { recordAudit } from './audit';
+
+interface Subject {
+  job_id: string;
+  subject: string;
+}
+
+/** What each job works on: a survey's name or an analysis's key with the run's number. */
+async function subjectsOf(jobs: JobRow[]): Promise<Map<string, string>> {
+  if (jobs.length === 0) return new Map();
+  const rows = await database().query<Subject>(
+    `select j.id as job_id,
+       coalesce(s.name, 'A-' || a.number || ', run ' || r.number, '') as subject
+     from job j left join survey s on s.id = j.survey_id
+       left join run r on r.job_id = j.id left join analysis a on a.id = r.analysis_id
+     where j.id = any($1::uuid[])`,
+    { bind: [jobs.map(({ id }) => id)], type: QueryTypes.SELECT },
+  );
+  return new Map(rows.map((row) => [row.job_id, row.subject]));
+}
+
+export async function describeJobs(jobs: JobRow[]): Promise<JobView[]> {
+  const subjects = await subjectsOf(jobs);
+  const now = new Date();
+  return jobs.map((job) => ({
+    id: job.id,
+    kind: job.kind,
+    status: job.status,
+    stage: job.stage,
+    done: job.doneCount,
+    total: job.totalCount,
+    attempts: job.attempts,
+    timeLeftS: timeLeftS(job, now),
+    cancelRequested: job.cancelRequestedAt !== null && job.status === 'running',
+    fault: job.fault,
+    subject: subjects.get(job.id) ?? '',
+    createdAt: job.createdAt.toISOString(),
+    startedAt: job.startedAt?.toISOString() ?? null,
+    finishedAt: job.finishedAt?.toISOString() ?? null,
+  }));
+}
+
+export async function describeJob(job: JobRow): Promise<JobView> {
+  const [view] = await describeJobs([job]);
+  return view;
+}
+
+/** The newest jobs of the collaboration; those that are open first. */
+export async function listJobs(actor: Actor, limit = 50): Promise<{ jobs: JobView[] }> {
+  demand(actor, 'read');
+  const jobs = await JobRow.findAll({
+    where: { collaborationId: actor.collaborationId },
+    order: [
+      [database().literal(`status in ('waiting', 'running')`) as never, 'DESC'],
+      ['createdAt', 'DESC'],
+    ],
+    limit,
+  });
+  return { jobs: await describeJobs(jobs) };
+}
+
+async function findJob(actor: Actor, id: string): Promise<JobRow> {
+  demand(actor, 'read');
+  const isId = idSchema.safeParse(id).success;
+  const job = isId
+    ? await JobRow.findOne({ where: { id, collaborationId: actor.collaborationId } })
+    : null;
+  if (!job) throw new NotFound('job');
+  return job;
+}
+
+export async function getJob(actor: Actor, id: string): Promise<JobView> {
+  return describeJob(await findJob(actor, id));
+}
+
+/** Who may start the work may stop it and start it again. */
+async function demandControl(actor: Actor, job: JobRow): Promise<void> {
+  if (job.kind === 'compute-maps') {
+    const survey = await SurveyRow.findByPk(job.surveyId as string, { rejectOnEmpty: true });
+    demand(actor, 'import', { isLead: survey.leadId === actor.personId });
+    return;
+  }
+  const run = await RunRow.findOne({ where: { jobId: job.id }, rejectOnEmpty: true });
+  const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });
+  demand(actor, 'run-analysis', { isOwn: analysis.createdBy === actor.personId });
+}
+
+const actionOf = { 'compute-maps': 'import', 'compute-run': 'run-analysis' } as const;
+
+/** Stops a job: a waiting one at once, a running one within seconds. */
+export async function cancelJob(actor: Actor, id: string): Promise<JobView> {
+  const job = await findJob(actor, id);
+  await demandControl(actor, job);
+  await inTransaction(async (transaction) => {
+    if (!(await requestCancel(transaction, job.id))) {
+      throw new Conflict('The job has ended already: there is nothing to stop');
+    }
+    const item = { kind: 'job', id: job.id };
+    await recordAudit(actor, actionOf[job.kind], item, 'stopped a computation', transaction);
+  });
+  return describeJob(await job.reload());
+}
+
+/** Starts a job again that failed or was stopped; what it had stored is not computed anew. */
+export async function retryJob(actor: Actor, id: string): Promise<JobView> {
+  const job = await findJob(actor, id);
+  await demandControl(actor, job);
+  await inTransaction(async (transaction) => {
+    await retry(transaction, job);
+    const item = { kind: 'job', id: job.id };
+    await recordAudit(actor, actionOf[job.kind], item, 'started a computation again', transaction);
+  });
+  return describeJob(await job.reload());
+}
