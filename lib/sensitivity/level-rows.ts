@@ -176,7 +176,7 @@ function newPieceAdder(rows: LevelRows, whole: Float64Array, fill: FillRow, colu
       const [cA, cB] = [coverageAt(yA), coverageAt(yB)];
       const span = yB - yA;
       const isJump = span < SHORTEST_PIECE;
-      const bend = isJump ? 0 : -slope * Math.abs(slope) * 0.5 * (cA + cB);
+      const bend = isJump ? 0 : -slope * slope * 0.5 * (cA + cB);
       const end = rises ? top : bottom;
       const endCoverage = rises ? piece.toCoverage : piece.fromCoverage;
       const sign = rises ? 1 : -1;
