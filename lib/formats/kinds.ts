@@ -54,6 +54,8 @@ export interface ReadContext {
   notMeasuredIsZero?: boolean;
   /** The person's own mapping: heading in the file to our column, or '' to ignore it. */
   columnMap?: Record<string, string>;
+  /** Targets of the file that the person leaves out: their rows are not read. */
+  leaveOut?: string[];
 }
 
 export interface Magnitude {

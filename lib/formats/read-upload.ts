@@ -13,6 +13,7 @@ import type {
   SampleRecord,
   UploadKind,
 } from './kinds';
+import { withoutLeftOut } from './leave-out';
 import { isWideMap, WideMapReading } from './maps-wide';
 import { TableReading } from './reading';
 import { FaultReport, NoteReport } from './reports';
@@ -54,12 +55,13 @@ interface Rows<R> {
 }
 
 function readRows<R>(
-  table: RawTable,
+  whole: RawTable,
   reader: KindReader<R>,
   context: ReadContext,
   faults: FaultReport,
   notes: NoteReport,
 ): Rows<R> {
+  const table = withoutLeftOut(whole, context);
   const binding = bindColumns(table, reader.columns(context), context.columnMap, faults, notes);
   const { columns, readings } = binding;
   if (!binding.isReadable) {

@@ -95,13 +95,12 @@ async function planOf(
   source: Source,
   read: ReadResult & { ok: true },
 ): Promise<Plan> {
-  const leaveOut = new Set(source.settings.leaveOut ?? []);
   if (read.kind === 'cooling-tables') {
     const title = source.settings.title ?? source.fileName.replace(/\.[^.]+$/, '');
     return planCoolingTable(actor, title, read.records[0]);
   }
   if (!source.survey) throw new NotFound('survey');
-  const context = { actor, survey: source.survey, leaveOut };
+  const context = { actor, survey: source.survey };
   switch (read.kind) {
     case 'targets':
       return planTargets(context, read.records);
@@ -147,7 +146,14 @@ async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promise<DryR
     notes: [...read.notes, ...plan.notes],
     faults: [],
     faultCount: 0,
-    items: plan.items,
+    items: [
+      ...plan.items,
+      ...(source.settings.leaveOut ?? []).map((name) => ({
+        name,
+        outcome: 'left-out' as const,
+        summary: 'left out of this import',
+      })),
+    ],
     summary: plan.summary,
   };
   return { plan, report };

@@ -52,10 +52,6 @@ export async function planCompanions(
     const target = names.find(record.target);
     if (!target) continue;
     const label = `${target.name} ${record.companion}`;
-    if (context.leaveOut.has(record.target)) {
-      items.push({ name: label, outcome: 'left-out', summary: 'left out of this import' });
-      continue;
-    }
     const row = known.get(`${target.id}|${foldName(record.companion)}`);
     const unchanged = row !== undefined && isUnchanged(row, fieldsOf(record));
     const place =

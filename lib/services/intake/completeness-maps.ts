@@ -41,10 +41,6 @@ export async function planCompletenessMaps(
   for (const record of records) {
     const target = names.find(record.target);
     if (!target) continue;
-    if (context.leaveOut.has(record.target)) {
-      items.push({ name: target.name, outcome: 'left-out', summary: 'left out of this import' });
-      continue;
-    }
     if (hasCurve.has(target.id)) {
       faults.push({
         code: 'both-given',

@@ -64,10 +64,6 @@ export async function planContrastCurves(
   for (const record of records) {
     const target = names.find(record.target);
     if (!target) continue;
-    if (context.leaveOut.has(record.target)) {
-      items.push({ name: target.name, outcome: 'left-out', summary: 'left out of this import' });
-      continue;
-    }
     if (target.mapId && ready.has(target.mapId)) {
       faults.push({
         code: 'both-given',

@@ -25,7 +25,6 @@ export interface Plan {
 export interface PlanContext {
   actor: Actor;
   survey: SurveyRow;
-  leaveOut: ReadonlySet<string>;
 }
 
 /** "1 target", "94 targets". */

@@ -104,10 +104,6 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
   const steps: Step[] = [];
   const claimed = new Map<string, TargetRecord>();
   for (const record of records) {
-    if (context.leaveOut.has(record.name)) {
-      items.push({ name: record.name, outcome: 'left-out', summary: 'left out of this import' });
-      continue;
-    }
     const star = known.find(record);
     const target = byName.get(foldName(record.name)) ?? (star && byStar.get(star.id));
     const rival = star && claimed.get(star.id);

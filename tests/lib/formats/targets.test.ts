@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { readUpload } from '@/lib/formats';
 import { faultsOf, notesOf, recordsOf } from './read-text';
 
 const ages = (style: string, cells: string) =>
@@ -116,5 +117,19 @@ describe('readTargets(table)', () => {
     expect(faultsOf('targets', text('a\u202eb'))).toEqual([
       'control-character at line 2, column "notes"',
     ]);
+  });
+});
+
+describe('a target that is left out', () => {
+  it('takes its faults with it, and the lines of the others keep their numbers', () => {
+    const text = 'name,distance,age\nOne,far,30\nTwo,40,30\nThree,none,30\n';
+    const read = (leaveOut?: string[]) =>
+      readUpload(new TextEncoder().encode(text), { fileName: 't.csv', kind: 'targets', leaveOut });
+    expect(read(['one', 'THREE'])).toMatchObject({
+      ok: true,
+      rowCount: 3,
+      records: [{ name: 'Two', line: 3 }],
+    });
+    expect(read(['one'])).toMatchObject({ ok: false, faults: [{ code: 'not-a-number', line: 4 }] });
   });
 });
