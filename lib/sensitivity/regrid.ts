@@ -34,10 +34,12 @@ export function regridNodes(
         continue;
       }
       const corner = m.index * columns + a.index;
-      const below = old[corner] + (old[corner + 1] - old[corner]) * a.share;
       const next = corner + columns;
-      const above = old[next] + (old[next + 1] - old[next]) * a.share;
-      completeness[cell++] = Math.min(1, Math.max(0, below + (above - below) * m.share));
+      // Weighted means, not rises: a share of 1 then gives the node's own value to the last bit.
+      const below = (1 - a.share) * old[corner] + a.share * old[corner + 1];
+      const above = (1 - a.share) * old[next] + a.share * old[next + 1];
+      const value = (1 - m.share) * below + m.share * above;
+      completeness[cell++] = Math.min(1, Math.max(0, value));
     }
   }
   return {
