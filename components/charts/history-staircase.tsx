@@ -5,12 +5,14 @@ import { formatLimit, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
 import { textWidth } from './text-width';
-import { linearTicks, type Tick, withUnit } from './ticks';
+import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface HistoryStep {
-  /** When the limit took this value, ms since 1970. */
+  /** When the limit took this value, ms since 1970: the table gives its date. */
   at: number;
+  /** Number of the run that gave it. */
+  run: number;
   /** What changed: "ages, table 4". */
   change: string;
   limit: number;
@@ -20,16 +22,18 @@ export interface HistoryStep {
 
 export interface HistoryStaircaseProps {
   steps: HistoryStep[];
-  /** End of the time axis, ms since 1970. */
-  now: number;
   quantity: RateQuantity;
   height?: number;
 }
 
 const margin = { left: 44, right: 56, top: 48, bottom: 34 };
 
-/** How the limit has moved: a staircase with one ring and two lines of text at each change. */
-export function HistoryStaircase({ steps, now, quantity, height = 296 }: HistoryStaircaseProps) {
+/**
+ * How the limit has moved: a staircase with one ring and two lines of text at each change.
+ *
+ * Runs are spaced evenly, in their order: several of one day would lie on each other on a clock.
+ */
+export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStaircaseProps) {
   const [measure, width] = useWidth<HTMLDivElement>(820);
   const frame = {
     left: margin.left,
@@ -37,9 +41,8 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
     top: margin.top,
     bottom: height - margin.bottom,
   };
-  const start = steps[0]?.at ?? now - 1;
-  const span = Math.max(1, now - start);
-  const x = scaleLinear([start - 0.06 * span, now + 0.02 * span], [frame.left, frame.right]);
+  const end = Math.max(1, steps.length - 0.25);
+  const x = scaleLinear([-0.08 * end, end], [frame.left, frame.right]);
   const peak = Math.max(1e-6, ...steps.map(({ limit }) => limit));
   const y = scaleLinear([0, peak], [frame.bottom, frame.top]);
   const unit = quantity === 'host_fraction' ? '\u2009%' : '';
@@ -61,8 +64,9 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
       tables={() => [
         {
           caption: 'History of the upper limit',
-          columns: ['change', 'date', 'limit', 'with zero detections'],
+          columns: ['run', 'change', 'date', 'limit', 'with zero detections'],
           rows: steps.map((step) => [
+            String(step.run),
             step.change,
             new Date(step.at).toISOString().slice(0, 10),
             formatLimit(step.limit, quantity),
@@ -81,7 +85,11 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
         hasLine={false}
       />
       <BottomAxis
-        ticks={timeTicks(start, now)}
+        ticks={steps.map((step, index) => ({
+          value: index,
+          label: `run ${step.run}`,
+          isMajor: true,
+        }))}
         scale={x}
         y={frame.bottom}
         x0={frame.left}
@@ -91,10 +99,10 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
         <>
           <path
             className="alternative-line"
-            d={stairs(steps, x, (step) => y(step.limitWithZero ?? step.limit), x(now))}
+            d={stairs(steps, x, (step) => y(step.limitWithZero ?? step.limit), x(end))}
           />
           {last.limitWithZero !== undefined && (
-            <text className="quiet" x={x(now) + 6} y={y(last.limitWithZero) + 4}>
+            <text className="quiet" x={x(end) + 6} y={y(last.limitWithZero) + 4}>
               {formatLimit(last.limitWithZero, quantity)}
             </text>
           )}
@@ -108,9 +116,9 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
           </text>
         </>
       )}
-      <path className="step-line" d={stairs(steps, x, (step) => y(step.limit), x(now))} />
-      {steps.map((step) => (
-        <circle key={step.at} className="step-dot" cx={x(step.at)} cy={y(step.limit)} r="4.5" />
+      <path className="step-line" d={stairs(steps, x, (step) => y(step.limit), x(end))} />
+      {steps.map((step, index) => (
+        <circle key={step.run} className="step-dot" cx={x(index)} cy={y(step.limit)} r="4.5" />
       ))}
       {labels.map((label) => (
         <g key={label.key}>
@@ -136,11 +144,11 @@ export function HistoryStaircase({ steps, now, quantity, height = 296 }: History
 
 function stairs(
   steps: HistoryStep[],
-  x: (at: number) => number,
+  x: (index: number) => number,
   y: (step: HistoryStep) => number,
   end: number,
 ): string {
-  return `${steps.map((step, index) => (index === 0 ? `M${x(step.at)},${y(step)}` : `H${x(step.at)}V${y(step)}`)).join('')}H${end}`;
+  return `${steps.map((step, index) => (index === 0 ? `M${x(index)},${y(step)}` : `H${x(index)}V${y(step)}`)).join('')}H${end}`;
 }
 
 /**
@@ -149,23 +157,23 @@ function stairs(
  */
 function placeLabels(
   steps: HistoryStep[],
-  x: (at: number) => number,
+  x: (index: number) => number,
   y: (limit: number) => number,
   right: number,
   quantity: RateQuantity,
 ) {
   return steps.map((step, index) => {
-    const at = x(step.at);
+    const at = x(index);
     const top = y(step.limit);
     const words = textWidth(step.change, 13);
     const limit = formatLimit(step.limit, quantity);
     const isLast = index === steps.length - 1;
-    const room = (isLast ? right + 50 : x(steps[index + 1].at)) - at - 12;
+    const room = (isLast ? right + 50 : x(index + 1)) - at - 12;
     const fits = words <= room;
-    const rises = !fits && isLast && index > 0 && words < at - x(steps[0].at) && right > 480;
+    const rises = !fits && isLast && index > 0 && words < at - x(0) && right > 480;
     const riseTo = rises ? Math.min(top, y(steps[index - 1].limit)) - 46 : 0;
     return {
-      key: step.at,
+      key: step.run,
       x: at + 9,
       y: top - 9,
       change: fits || rises ? step.change : '',
@@ -175,23 +183,4 @@ function placeLabels(
       limit: textWidth(limit, 13) <= room ? limit : '',
     };
   });
-}
-
-/** Starts of years, or of months where the axis is shorter than two years. */
-function timeTicks(start: number, end: number): Tick[] {
-  const from = new Date(start);
-  const months = (end - start) / 2_629_800_000;
-  const every = months > 24 ? 12 : months > 8 ? 3 : 1;
-  const ticks: Tick[] = [];
-  for (let month = 0; month <= months + every; month += 1) {
-    const at = Date.UTC(from.getUTCFullYear(), from.getUTCMonth() + month, 1);
-    const date = new Date(at);
-    if (at < start || at > end || date.getUTCMonth() % every !== 0) continue;
-    const label =
-      every === 12
-        ? String(date.getUTCFullYear())
-        : date.toLocaleDateString('en-GB', { month: 'short', year: 'numeric', timeZone: 'UTC' });
-    ticks.push({ value: at, isMajor: true, label });
-  }
-  return ticks;
 }
