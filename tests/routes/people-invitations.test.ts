@@ -20,7 +20,6 @@ const people = await import('../support/people');
 const { bearer, call, createPerson, sessionCookieOf, tokenOf, webAddress } = people;
 
 type Role = import('@/lib/schemas/common').Role;
-type Response_ = Awaited<ReturnType<typeof call>>;
 
 const { query } = withDatabase();
 const PASSWORD = 'violet harbour anchor mosaic';
@@ -85,7 +84,7 @@ const joinWith = (
   code: string,
   body: Record<string, unknown>,
   headers: Record<string, string> = {},
-): Promise<Response_> => call(join, { method: 'POST', params: { code }, body, headers });
+): Promise<Response> => call(join, { method: 'POST', params: { code }, body, headers });
 
 describe('POST …/invitations', () => {
   it('sends one message with a link that opens once, and stores no code', async () => {
