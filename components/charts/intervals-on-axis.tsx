@@ -2,7 +2,7 @@
 
 import { scaleLinear } from 'd3';
 import type { ReactNode } from 'react';
-import { formatPercent } from '@/lib/quantities/display';
+import { formatLevel } from './posterior-words';
 import { linearTicks, withUnit } from './ticks';
 
 export interface LimitInterval {
@@ -210,7 +210,7 @@ export function LimitLevels({
           return (
             <tr key={level} className={`border-rule border-b ${isChosen ? 'bg-act-soft' : ''}`}>
               <th scope="row" className="py-1 pr-4 text-left font-semibold">
-                {formatPercent(level, 3).replace(/\.0+(?=\u2009)/, '')}
+                {formatLevel(level)}
               </th>
               <td>
                 <IntervalMark

@@ -44,7 +44,8 @@ function rings(map: MapData, levels: number[], { x, y }: Projection) {
       level: shape.value,
       rings: shape.coordinates.flat().map((ring) => ({
         points: ring.map(([i, j]): Point => [px(i), py(j)]),
-        isOnEdge: ring.map(([i, j]) => [i === 0, i === size[0], j === 0, j === size[1]]),
+        // d3 closes its rings half a cell outside the outer nodes: such points are not contour.
+        isOnEdge: ring.map(([i, j]) => i === 0 || i === size[0] || j === 0 || j === size[1]),
       })),
     }));
 }
@@ -70,18 +71,19 @@ export function isolines(map: MapData, levels: number[], projection: Projection)
     const points: Point[] = [];
     for (const ring of line.rings) {
       let run: Point[] = [];
-      for (let index = 0; index < ring.points.length; index += 1) {
-        const edge = ring.isOnEdge[index];
-        const before = index > 0 ? ring.isOnEdge[index - 1] : undefined;
-        const alongEdge = before?.some((isEdge, side) => isEdge && edge[side]) ?? false;
-        if (alongEdge) {
-          if (run.length > 1) path += `M${pathOf(run)}`;
-          run = [];
+      const finish = () => {
+        if (run.length > 1) path += `M${pathOf(run)}`;
+        run = [];
+      };
+      ring.points.forEach((point, index) => {
+        if (ring.isOnEdge[index]) {
+          finish();
+          return;
         }
-        run.push(ring.points[index]);
-        if (!edge.some(Boolean)) points.push(ring.points[index]);
-      }
-      if (run.length > 1) path += `M${pathOf(run)}`;
+        run.push(point);
+        points.push(point);
+      });
+      finish();
     }
     return { level: line.level, path, points };
   });

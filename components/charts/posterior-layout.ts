@@ -7,7 +7,7 @@ import type { RateCurve } from './rate-curve';
  * without end at zero is cut at four times its value at the median; a second curve may
  * raise the axis by a third, and is cut there.
  */
-export function densityTop(data: PosteriorData): number {
+export function densityTop(data: Pick<PosteriorData, 'curve' | 'second'>): number {
   const own = peak(data.curve) * 1.3;
   if (!data.second) return own;
   return Math.min(Math.max(own, peak(data.second.curve) * 1.08), own * 1.3);

@@ -1,11 +1,12 @@
 import {
   formatInterval,
   formatLimit,
-  formatPercent,
+  formatPlain,
   formatRate,
   formatSignificant,
   type RateQuantity,
   rateUnit,
+  THIN_SPACE,
 } from '@/lib/quantities/display';
 import type { ChartTable } from './chart-figure';
 import { valueAt } from './paths';
@@ -52,7 +53,7 @@ export function quantityWords(quantity: RateQuantity): string {
 
 /** "95 %". */
 export function formatLevel(level: number): string {
-  return formatPercent(level, level > 0.99 ? 4 : 3).replace(/\.0+(?=\u2009)/, '');
+  return `${formatPlain(100 * level, 5)}${THIN_SPACE}%`;
 }
 
 /** "<5.8 % (95 %)", as it stands on a flag. */

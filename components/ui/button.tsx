@@ -14,7 +14,7 @@ export interface ButtonProps extends Omit<ButtonHTMLAttributes<HTMLButtonElement
   disabledReason?: string;
   /** Work is under way; a second press does nothing. */
   isBusy?: boolean;
-  children: ReactNode;
+  children?: ReactNode;
   ref?: Ref<HTMLButtonElement>;
 }
 

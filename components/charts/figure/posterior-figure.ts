@@ -128,18 +128,18 @@ export function posteriorScene(inputs: PosteriorFigureInputs): Scene {
     );
     text(beside, frame.bottom - 24, 'lies above the limit');
   }
-  const named = [
+  const said = [
+    `Upper limit ${limitWithLevel(limit, credibleLevel, quantity)}`,
+    `prior: ${prior.label}`,
     inputs.median === undefined ? '' : `median ${formatRate(inputs.median, quantity)} (dotted)`,
     alternative
       ? `dashed: ${alternative.label}, ${limitWithLevel(alternative.limit, credibleLevel, quantity)}`
       : '',
-    `upper limit ${limitWithLevel(limit, credibleLevel, quantity)}; prior: ${prior.label}`,
-    inputs.caption,
-  ].filter(Boolean);
-  const lines = wrap(
-    named.map((part) => (/[.!]$/.test(part) ? part : `${part}.`)).join(' '),
-    widthPt - 12,
-  );
+  ]
+    .filter(Boolean)
+    .join('; ');
+  const caption = /[.]$/.test(inputs.caption) ? inputs.caption : `${inputs.caption}.`;
+  const lines = wrap(`${said}. ${caption}`, widthPt - 12);
   lines.forEach((line, index) => {
     text(frame.left, frame.bottom + 38 + index * linePt, line, { fill: colours.ink });
   });
