@@ -28,6 +28,9 @@ const START_MAG = -15;
 /** z at which Φ is 1 to the last bit. */
 const CERTAIN_SIGMAS = 8;
 const STEP_TIMES_SIGMA = 0.01;
+const WIDEST_STEP_MAG = 0.002;
+/** Beyond n = 100 the threshold is narrower than any curve is known. */
+const NARROWEST_STEP_MAG = 1e-4;
 
 const tables = new Map<number, ThresholdTable>();
 
@@ -41,7 +44,8 @@ export function thresholdTable(nSigma: number): ThresholdTable {
   const known = tables.get(nSigma);
   if (known) return known;
   const certainAt = 2.5 * Math.log10(1 + CERTAIN_SIGMAS / nSigma);
-  const steps = Math.ceil((certainAt - START_MAG) / Math.min(0.002, STEP_TIMES_SIGMA / nSigma));
+  const wanted = Math.min(WIDEST_STEP_MAG, STEP_TIMES_SIGMA / nSigma);
+  const steps = Math.ceil((certainAt - START_MAG) / Math.max(NARROWEST_STEP_MAG, wanted));
   const step = (certainAt - START_MAG) / steps;
   const p = new Float64Array(steps + 1);
   const sum = new Float64Array(steps + 1);

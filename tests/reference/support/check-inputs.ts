@@ -1,3 +1,4 @@
+import { intervalIndex } from '@/lib/numerics/grid';
 import type {
   ContrastCurve,
   EccentricityLaw,
@@ -68,13 +69,7 @@ export function contrastCurve(
 }
 
 function logLinear(x: number, xs: number[], ys: number[]): number {
-  const i = Math.max(
-    0,
-    Math.min(
-      xs.length - 2,
-      xs.findLastIndex((value) => value <= x),
-    ),
-  );
+  const i = intervalIndex(xs, x);
   const share = Math.log(x / xs[i]) / Math.log(xs[i + 1] / xs[i]);
   return ys[i] + (ys[i + 1] - ys[i]) * share;
 }
