@@ -3,7 +3,7 @@ import { UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, InputError, NotFound } from '@/lib/errors';
-import type { KnownMap, ReadContext, ReadResult, UploadKind } from '@/lib/formats';
+import type { UploadKind } from '@/lib/formats';
 import { enqueueMaps } from '@/lib/queue/enqueue';
 import { idSchema } from '@/lib/schemas/common';
 import {
@@ -12,152 +12,11 @@ import {
   type UploadView,
   uploadSettingsSchema,
 } from '@/lib/schemas/uploads';
-import { BUILT_IN_LAW_BANDS } from '@/lib/sensitivity';
-import {
-  CompletenessMapRow,
-  CoolingTableRow,
-  inTransaction,
-  PersonRow,
-  SurveyRow,
-  TargetRow,
-  UploadRow,
-} from '@/models';
-import { unpackMap } from '@/models/map-values';
+import { inTransaction, PersonRow, SurveyRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
+import { dryRun, type Source } from './dry-run';
 import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
-import { planCompanions } from './intake/companions';
-import { planCompletenessMaps } from './intake/completeness-maps';
-import { planContrastCurves } from './intake/contrast-curves';
-import { planCoolingTable } from './intake/cooling-table';
-import type { Plan } from './intake/plan';
-import { planTargets } from './intake/targets';
-import { readOnThread } from './reading';
 import { findSurvey, isLead } from './surveys';
-
-interface Source {
-  kind: UploadKind;
-  fileName: string;
-  survey: SurveyRow | null;
-  settings: UploadSettings;
-}
-
-async function bandsOf(survey: SurveyRow): Promise<string[]> {
-  const { cooling } = survey.mapSettings;
-  if (cooling.kind === 'built-in') return [...BUILT_IN_LAW_BANDS];
-  const table = await CoolingTableRow.findByPk(cooling.coolingTableId);
-  return table ? Object.keys(table.magnitudes) : [];
-}
-
-async function mapsByName(targets: TargetRow[]): Promise<Map<string, KnownMap>> {
-  const rows = await CompletenessMapRow.findAll({
-    where: { id: targets.flatMap((target) => (target.mapId ? [target.mapId] : [])) },
-  });
-  const byId = new Map(rows.map((row) => [row.id, row]));
-  const maps = new Map<string, KnownMap>();
-  for (const target of targets) {
-    const row = target.mapId ? byId.get(target.mapId) : undefined;
-    if (!row) continue;
-    maps.set(target.name, {
-      massMjup: row.massMjup,
-      semiMajorAxisAu: row.semiMajorAxisAu,
-      completeness: [...unpackMap(row.nodeValues)],
-    });
-  }
-  return maps;
-}
-
-async function contextOf(source: Source): Promise<ReadContext> {
-  const { survey, settings, kind, fileName } = source;
-  const context: ReadContext = {
-    fileName,
-    kind,
-    defaultTarget: settings.defaultTarget,
-    notMeasuredIsZero: settings.notMeasuredIsZero,
-    columnMap: settings.columnMap,
-    leaveOut: settings.leaveOut,
-  };
-  if (!survey || kind === 'targets') return context;
-  const targets = await TargetRow.findAll({ where: { surveyId: survey.id } });
-  context.targetNames = targets.map((target) => ({
-    name: target.name,
-    otherNames: target.otherNames,
-  }));
-  if (kind === 'contrast-curves') {
-    context.bands = await bandsOf(survey);
-    context.defaultBand = survey.band;
-  }
-  if (kind === 'companions') context.maps = await mapsByName(targets);
-  return context;
-}
-
-async function planOf(
-  actor: Actor,
-  source: Source,
-  read: ReadResult & { ok: true },
-): Promise<Plan> {
-  if (read.kind === 'cooling-tables') {
-    const title = source.settings.title ?? source.fileName.replace(/\.[^.]+$/, '');
-    return planCoolingTable(actor, title, read.records[0]);
-  }
-  if (!source.survey) throw new NotFound('survey');
-  const context = { actor, survey: source.survey };
-  switch (read.kind) {
-    case 'targets':
-      return planTargets(context, read.records);
-    case 'contrast-curves':
-      return planContrastCurves(context, read.records);
-    case 'completeness-maps':
-      return planCompletenessMaps(context, read.records);
-    case 'companions':
-      return planCompanions(context, read.records);
-  }
-}
-
-interface DryRun {
-  plan: Plan;
-  report: UploadReport;
-}
-
-/**
- * Reads and plans, storing nothing.
- *
- * @throws InputError with every fault and its place
- */
-async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promise<DryRun> {
-  const read = await readOnThread(bytes, await contextOf(source));
-  if (!read.ok) {
-    const faults = read.faults.map((fault) => ({ file: source.fileName, ...fault }));
-    const status = faults.some((fault) => fault.code === 'too-large' && fault.line === undefined)
-      ? 413
-      : 422;
-    throw new InputError(faults, { status, count: read.faultCount });
-  }
-  const plan = await planOf(actor, source, read);
-  if (plan.faults.length > 0) {
-    throw new InputError(
-      plan.faults.slice(0, 100).map((fault) => ({ file: source.fileName, ...fault })),
-      { count: plan.faults.length },
-    );
-  }
-  const report: UploadReport = {
-    container: read.container,
-    rows: read.rowCount,
-    columns: read.columns,
-    notes: [...read.notes, ...plan.notes],
-    faults: [],
-    faultCount: 0,
-    items: [
-      ...plan.items,
-      ...(source.settings.leaveOut ?? []).map((name) => ({
-        name,
-        outcome: 'left-out' as const,
-        summary: 'left out of this import',
-      })),
-    ],
-    summary: plan.summary,
-  };
-  return { plan, report };
-}
 
 async function describeUpload(row: UploadRow): Promise<UploadView> {
   const [survey, person] = await Promise.all([
