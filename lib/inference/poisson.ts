@@ -7,7 +7,8 @@ export interface RateLikelihood {
   powerOfRate: number;
   /** Stars without a detection that would certainly have shown a companion. */
   powerOfComplement: number;
-  logRegular(x: number): number;
+  /** The complement 1 - x comes along, because near 1 x itself has lost it. */
+  logRegular(x: number, complement: number): number;
   /** Rate of the exponential decay [stars]; 0 where the rate ends at 1. */
   decay: number;
 }

@@ -3,7 +3,7 @@ import { hostFractionLikelihood } from './host-fraction';
 import { integrateDensity, type Stretch } from './integrated-density';
 import { poissonLikelihood, type RateLikelihood } from './poisson';
 import { type PriorLaw, priorLaw } from './priors';
-import { fromZero, type LogDensity, logarithmic, toOne } from './stretches';
+import { fromOne, fromZero, type LogDensity, logarithmic, placeAt } from './stretches';
 
 /** Below this many expected detections at the largest rate the data say nothing. */
 const NOTHING_OBSERVABLE = 1e-9;
@@ -28,11 +28,11 @@ function multiply(prior: PriorLaw, likelihood: RateLikelihood): Product {
   return {
     exponentAtZero,
     exponentAtOne,
-    logDensity: (x, logX, logComplement) =>
+    logDensity: ({ x, logX, complement, logComplement }) =>
       (exponentAtZero === 1 ? 0 : (exponentAtZero - 1) * logX) +
       (exponentAtOne === 1 ? 0 : (exponentAtOne - 1) * logComplement) +
-      prior.logRegular(x) +
-      likelihood.logRegular(x),
+      prior.logRegular(x, complement) +
+      likelihood.logRegular(x, complement),
   };
 }
 
@@ -96,10 +96,8 @@ function stretchesOf(prior: PriorLaw, likelihood: RateLikelihood): Stretch[] {
     const end = effectiveEnd(exponentAtZero, prior.decay + likelihood.decay);
     return [fromZero(end, exponentAtZero, logDensity)];
   }
-  if (top < 1 || Number.isInteger(exponentAtOne)) {
-    return [fromZero(top, exponentAtZero, logDensity)];
-  }
-  return [fromZero(0.5, exponentAtZero, logDensity), toOne(0.5, exponentAtOne, logDensity)];
+  if (top !== 1) return [fromZero(top, exponentAtZero, logDensity)];
+  return [fromZero(0.5, exponentAtZero, logDensity), fromOne(0.5, exponentAtOne, logDensity)];
 }
 
 function logPriorNorm(prior: PriorLaw): number {
@@ -173,11 +171,11 @@ export function ratePosterior(question: RateQuestion): RatePosterior {
     },
     density(x) {
       if (isOutside(x)) return 0;
-      return Math.exp(logDensity(x, Math.log(x), Math.log1p(-x)) - integrated.logMass);
+      return Math.exp(logDensity(placeAt(x)) - integrated.logMass);
     },
     priorDensity(x) {
       if (isOutside(x)) return 0;
-      return Math.exp(priorOnly.logDensity(x, Math.log(x), Math.log1p(-x)) - priorNorm());
+      return Math.exp(priorOnly.logDensity(placeAt(x)) - priorNorm());
     },
     cumulative: integrated.cumulative,
     quantile: (p) => (p === 1 ? top : integrated.quantile(p)),

@@ -10,7 +10,7 @@ export interface PriorLaw {
   exponentAtZero: number;
   exponentAtOne: number;
   /** ln of what is left without the powers: finite on the whole support. */
-  logRegular(x: number): number;
+  logRegular(x: number, complement: number): number;
   /** Rate of the exponential decay of an unbounded prior [stars]. */
   decay: number;
   /** ln of the integral; null if it has none, 'numerical' where only quadrature gives it. */
@@ -86,10 +86,12 @@ function jeffreysFraction(max: number | undefined, completeness: Float64Array): 
     exponentAtZero: 0.5,
     exponentAtOne: certain > 0 ? 0.5 : 1,
     decay: 0,
-    logRegular(x) {
+    logRegular(_x, complement) {
       let information = 0;
-      for (let j = 0; j < partial.length; j++) information += partial[j] / (1 - x * partial[j]);
-      return 0.5 * Math.log(certain > 0 ? certain + (1 - x) * information : information);
+      for (let j = 0; j < partial.length; j++) {
+        information += partial[j] / (1 - partial[j] + partial[j] * complement);
+      }
+      return 0.5 * Math.log(certain > 0 ? certain + complement * information : information);
     },
     logNorm: 'numerical',
   };

@@ -1,10 +1,21 @@
 import type { Stretch } from './integrated-density';
 
-/**
- * ln of an unnormalised density per dx. The logarithms of x and of 1 - x come along, because near
- * a singular end x itself has lost them.
- */
-export type LogDensity = (x: number, logX: number, logComplement: number) => number;
+/** A place in the support. The complement 1 - x and the logarithms are given, because near a
+ * singular end x itself has lost their digits. */
+export interface Place {
+  x: number;
+  logX: number;
+  complement: number;
+  logComplement: number;
+}
+
+/** ln of an unnormalised density per dx. */
+export type LogDensity = (place: Place) => number;
+
+/** The place of x, with the digits that x has. */
+export function placeAt(x: number): Place {
+  return { x, logX: Math.log(x), complement: 1 - x, logComplement: Math.log1p(-x) };
+}
 
 /** Power of v that makes x^(exponent - 1) dx smooth at x = 0. */
 function smoothingPower(exponent: number): number {
@@ -20,33 +31,36 @@ export function fromZero(to: number, exponent: number, logDensity: LogDensity): 
   return {
     from: 0,
     to,
+    isReversed: false,
     toX: (v) => to * v ** power,
     toV: (x) => (x / to) ** (1 / power),
     logDensity(v) {
       const logV = Math.log(v);
       const logX = logTo + power * logV;
       const x = power === 1 ? to * v : Math.exp(logX);
-      return logDensity(x, logX, Math.log1p(-x)) + Math.log(power) + logX - logV;
+      const place = { x, logX, complement: 1 - x, logComplement: Math.log1p(-x) };
+      return logDensity(place) + Math.log(power) + logX - logV;
     },
   };
 }
 
-/** [from, 1] in 1 - x = (1 - from)(1 - v)^m, for a density (1 - x)^(exponent - 1) at 1. */
-export function toOne(from: number, exponent: number, logDensity: LogDensity): Stretch {
+/** [from, 1] in 1 - x = (1 - from) v^m, v from the upper end, for (1 - x)^(exponent - 1) at 1. */
+export function fromOne(from: number, exponent: number, logDensity: LogDensity): Stretch {
   const power = smoothingPower(exponent);
   const span = 1 - from;
+  const logSpan = Math.log(span);
   return {
     from,
     to: 1,
-    toX: (v) => 1 - span * (1 - v) ** power,
-    toV: (x) => 1 - ((1 - x) / span) ** (1 / power),
+    isReversed: true,
+    toX: (v) => 1 - span * v ** power,
+    toV: (x) => ((1 - x) / span) ** (1 / power),
     logDensity(v) {
-      const logRest = Math.log1p(-v);
-      const logComplement = Math.log(span) + power * logRest;
-      const complement = Math.exp(logComplement);
-      const x = 1 - complement;
-      const logX = Math.log1p(-complement);
-      return logDensity(x, logX, logComplement) + Math.log(power) + logComplement - logRest;
+      const logV = Math.log(v);
+      const logComplement = logSpan + power * logV;
+      const complement = power === 1 ? span * v : Math.exp(logComplement);
+      const place = { x: 1 - complement, logX: Math.log1p(-complement), complement, logComplement };
+      return logDensity(place) + Math.log(power) + logComplement - logV;
     },
   };
 }
@@ -58,12 +72,14 @@ export function logarithmic(from: number, to: number, logDensity: LogDensity): S
   return {
     from,
     to,
+    isReversed: false,
     toX: (v) => Math.min(to, Math.max(from, from * Math.exp(span * v))),
     toV: (x) => Math.log(x / from) / span,
     logDensity(v) {
       const logX = logFrom + span * v;
       const x = Math.exp(logX);
-      return logDensity(x, logX, Math.log1p(-x)) + Math.log(span) + logX;
+      const place = { x, logX, complement: 1 - x, logComplement: Math.log1p(-x) };
+      return logDensity(place) + Math.log(span) + logX;
     },
   };
 }
