@@ -75,10 +75,15 @@ export function linearTicks(min: number, max: number, lengthPx: number, spacingP
 
 /** Ticks that include both ends of a control's range, three to six of them, at round steps. */
 export function evenTicks(min: number, max: number): Tick[] {
-  const isRound = (value: number) => Math.abs(Number(value.toPrecision(2)) / value - 1) < 1e-6;
-  const parts = [3, 4, 2, 5].find((count) => isRound((max - min) / count)) ?? 2;
+  const isRound = (value: number, digits: number) =>
+    Math.abs(Number(value.toPrecision(digits)) / value - 1) < 1e-6;
+  const counts = [4, 3, 5, 2];
+  const parts =
+    counts.find((count) => isRound((max - min) / count, 1)) ??
+    counts.find((count) => isRound((max - min) / count, 2)) ??
+    2;
   return Array.from({ length: parts + 1 }, (_, index) => {
-    const value = Number((min + ((max - min) * index) / parts).toPrecision(12));
+    const value = Number((min + ((max - min) * index) / parts).toFixed(9));
     return { value, isMajor: true, label: formatPlain(value) };
   });
 }

@@ -54,7 +54,7 @@ export function traceValueText(
   return `${head}, limit below ${limit}${levelWords ? ` ${levelWords}` : ''}`;
 }
 
-/** Keeps a typed or stepped value on the grid of steps and between the ends. */
+/** Keeps a stepped value on the grid of steps and between the ends. */
 export function snapToStep(value: number, min: number, max: number, step: number): number {
   const snapped = Math.round((value - min) / step) * step + min;
   const decimals = Math.max(0, Math.ceil(-Math.log10(step)) + 1);
@@ -216,9 +216,9 @@ function EndValues({
   );
 }
 
-/** The value above the track; pressed, it becomes a field for an exact number. */
+/** The value above the track; pressed, it becomes a field for an exact number, off the steps. */
 function NumberOnDemand(props: TraceSliderProps & { formatValue(value: number): string }) {
-  const { name, value, min, max, step, onChange, formatValue } = props;
+  const { name, value, min, max, onChange, formatValue } = props;
   const [isOpen, setOpen] = useState(false);
   if (!isOpen) {
     return (
@@ -235,7 +235,7 @@ function NumberOnDemand(props: TraceSliderProps & { formatValue(value: number): 
   const commit = (text: string) => {
     const number = Number(text.replace('−', '-').replace(',', '.'));
     if (text.trim() !== '' && Number.isFinite(number)) {
-      onChange(snapToStep(number, min, max, step), true);
+      onChange(Math.min(max, Math.max(min, number)), true);
     }
     setOpen(false);
   };

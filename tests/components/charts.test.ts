@@ -144,7 +144,7 @@ describe('ticks', () => {
 
   it('include both ends of a control', () => {
     expect(labels(evenTicks(-2.5, 0.5))).toEqual(['−2.5', '−1.5', '−0.5', '0.5']);
-    expect(labels(evenTicks(-1.8, 0.6))).toEqual(['−1.8', '−1', '−0.2', '0.6']);
+    expect(labels(evenTicks(-1.8, 0.6))).toEqual(['−1.8', '−1.2', '−0.6', '0', '0.6']);
   });
 });
 
