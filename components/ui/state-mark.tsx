@@ -17,7 +17,7 @@ const states: Record<StateKind, { icon: IconName; colour: string; isStrong: bool
   draft: { icon: 'draft', colour: 'text-ink3', isStrong: true },
   unsaved: { icon: 'draft', colour: 'text-warn', isStrong: true },
   waiting: { icon: 'draft', colour: 'text-ink3', isStrong: false },
-  running: { icon: 'running', colour: 'text-data', isStrong: true },
+  running: { icon: 'running', colour: 'text-act', isStrong: true },
   frozen: { icon: 'lock', colour: 'text-act', isStrong: true },
   released: { icon: 'diamond', colour: 'text-act', isStrong: true },
   ok: { icon: 'ok', colour: 'text-ok', isStrong: false },
