@@ -41,7 +41,10 @@ export function NewAnalysis(props: NewAnalysisProps) {
     (ready.length > 0 ? ready : offered).map((survey) => survey.id),
   );
   const [populationId, setPopulationId] = useState(
-    (populations.find((population) => population.key === wanted) ?? populations[0])?.id ?? '',
+    (
+      populations.find((population) => population.id === wanted || population.key === wanted) ??
+      populations[0]
+    )?.id ?? '',
   );
   const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
   const [likelihood, setLikelihood] = useState<AnalysisRecipe['likelihood']>('host-fraction');

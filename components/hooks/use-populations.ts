@@ -1,17 +1,15 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
+import { populationListSchema } from '@/lib/schemas/population-versions';
 import {
   type CreatePopulation,
   type PopulationDefinition,
   type PopulationView,
   populationSchema,
 } from '@/lib/schemas/populations';
-import { apiPath } from './api-path';
+import { apiPath, withQuery } from './api-path';
 import { request } from './request';
-
-export const populationListSchema = z.object({ populations: z.array(populationSchema) });
 
 /** Every version that the person may see, newest first. */
 export function usePopulations(collaboration: string, fallback?: PopulationView[]) {
@@ -47,4 +45,15 @@ export function savePopulationVersion(
     method: 'POST',
     body: { ...version, convention: 'log' },
   });
+}
+
+/** Whether all may rest on a version; its definition stays as it is. */
+export function sharePopulation(
+  collaboration: string,
+  key: string,
+  version: number,
+  isShared: boolean,
+): Promise<PopulationView> {
+  const path = withQuery(apiPath(collaboration, 'populations', key), { version });
+  return request(path, populationSchema, { method: 'PATCH', body: { isShared } });
 }

@@ -1,0 +1,26 @@
+import type { Metadata } from 'next';
+import { newestRun } from '@/app/newest-run';
+import { currentActor } from '@/app/session';
+import { PopulationBuilder } from '@/components/populations/population-builder';
+import { may } from '@/lib/access/permissions';
+
+export const metadata: Metadata = { title: 'New population' };
+
+export default async function NewPopulationPage({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ collaboration: string }>;
+  searchParams: Promise<Record<string, string | undefined>>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  return (
+    <PopulationBuilder
+      collaboration={actor.collaboration}
+      versions={[]}
+      previewRun={await newestRun(actor)}
+      canShare={may(actor, 'share-population')}
+      query={await searchParams}
+    />
+  );
+}
