@@ -1,0 +1,329 @@
+import { type ZodObject, type ZodType, z } from 'zod';
+import {
+  changePasswordSchema,
+  collaborationSchema,
+  joinedSchema,
+  joinSchema,
+  sessionSchema,
+  updateCollaborationSchema,
+  updateMeSchema,
+} from './account';
+import {
+  analysisSchema,
+  copyAnalysisSchema,
+  createAnalysisSchema,
+  updateAnalysisSchema,
+} from './analyses';
+import { auditPageSchema, auditQuerySchema } from './audit';
+import { idSchema, pageSchema, roleSchema } from './common';
+import { jobSchema } from './jobs';
+import { overviewSchema } from './overview';
+import {
+  changeRolesSchema,
+  createCollaborationSchema,
+  createTokenSchema,
+  invitationOfferSchema,
+  invitationSchema,
+  inviteSchema,
+  memberSchema,
+  meSchema,
+  newTokenSchema,
+  signUpSchema,
+  tokenSchema,
+} from './people';
+import {
+  createVersionSchema,
+  populationListSchema,
+  populationVersionQuerySchema,
+  sharePopulationSchema,
+} from './population-versions';
+import { createPopulationSchema, populationSchema } from './populations';
+import { runSchema, runSummarySchema } from './runs';
+import { mapViewSchema } from './sensitivity';
+import {
+  companionSchema,
+  coolingTableSchema,
+  createSurveySchema,
+  leaveOutSchema,
+  surveyListSchema,
+  surveySchema,
+  targetListSchema,
+  targetSchema,
+  updateSurveySchema,
+} from './surveys';
+import { uploadQuerySchema, uploadSchema, uploadSettingsSchema } from './uploads';
+
+export type ApiMethod = 'get' | 'post' | 'patch' | 'delete';
+
+/** One method of one address: what it takes, what it answers, who may ask. */
+export interface ApiRoute {
+  method: ApiMethod;
+  path: string;
+  summary: string;
+  /** A token's scope; `session` needs a signed-in person, `open` nobody. */
+  access: 'read' | 'write' | 'run' | 'session' | 'open';
+  query?: ZodObject;
+  body?: ZodType;
+  /** The body is a file, streamed. */
+  isUpload?: boolean;
+  status?: number;
+  answer?: ZodType;
+  /** Content types of an answer that is a file or bytes, besides JSON. */
+  files?: readonly string[];
+}
+
+const team = '/api/v1/collaborations/{collaboration}';
+const bytes = ['application/octet-stream'];
+const listOf = <Key extends string>(key: Key, schema: ZodType) =>
+  z.object({ [key]: z.array(schema) });
+const surveyMapsSchema = z.object({
+  job: jobSchema.nullable(),
+  maps: z.array(
+    z.object({
+      target: z.string(),
+      targetId: idSchema,
+      mapId: idSchema.nullable(),
+      state: z.string(),
+      fault: z.string().nullable(),
+      digest: z.string().nullable(),
+      checksum: z.string().nullable(),
+    }),
+  ),
+});
+const membershipSchema = z.object({
+  slug: z.string(),
+  name: z.string(),
+  roles: z.array(roleSchema),
+});
+
+type Rest = Omit<ApiRoute, 'method' | 'path' | 'summary' | 'access'>;
+type Access = ApiRoute['access'];
+const route = (
+  method: ApiMethod,
+  path: string,
+  access: Access,
+  summary: string,
+  rest: Rest = {},
+): ApiRoute => ({ method, path, access, summary, ...rest });
+
+const people: ApiRoute[] = [
+  route('post', '/api/v1/sign-up', 'open', 'Make an account', {
+    body: signUpSchema,
+    status: 201,
+    answer: meSchema,
+  }),
+  route('get', '/api/v1/me', 'read', 'Who asks, and where they are a member', { answer: meSchema }),
+  route('patch', '/api/v1/me', 'session', 'Change your name', {
+    body: updateMeSchema,
+    answer: meSchema,
+  }),
+  route('post', '/api/v1/me/password', 'session', 'Change your password; other sessions end', {
+    body: changePasswordSchema,
+  }),
+  route('get', '/api/v1/me/sessions', 'session', 'Where you are signed in', {
+    answer: listOf('sessions', sessionSchema),
+  }),
+  route('delete', '/api/v1/me/sessions', 'session', 'End every other session'),
+  route('delete', '/api/v1/me/sessions/{session}', 'session', 'End one session'),
+  route('get', '/api/v1/join/{code}', 'open', 'What an invitation offers', {
+    answer: invitationOfferSchema,
+  }),
+  route('post', '/api/v1/join/{code}', 'open', 'Accept an invitation', {
+    body: joinSchema,
+    status: 201,
+    answer: joinedSchema,
+  }),
+  route('get', '/api/v1/collaborations', 'read', 'Collaborations that you are a member of', {
+    answer: listOf('collaborations', membershipSchema),
+  }),
+  route('post', '/api/v1/collaborations', 'session', 'Begin a collaboration', {
+    body: createCollaborationSchema,
+    status: 201,
+    answer: collaborationSchema,
+  }),
+  route('get', team, 'read', 'One collaboration', { answer: collaborationSchema }),
+  route('patch', team, 'write', 'Rename the collaboration', {
+    body: updateCollaborationSchema,
+    answer: collaborationSchema,
+  }),
+  route('get', `${team}/members`, 'read', 'Members and their roles', {
+    answer: listOf('members', memberSchema),
+  }),
+  route('patch', `${team}/members/{member}`, 'write', 'Change the roles of a member', {
+    body: changeRolesSchema,
+    answer: memberSchema,
+  }),
+  route('delete', `${team}/members/{member}`, 'write', 'Remove a member, or leave'),
+  route('get', `${team}/invitations`, 'read', 'Invitations and their states', {
+    answer: listOf('invitations', invitationSchema),
+  }),
+  route('post', `${team}/invitations`, 'write', 'Invite somebody by e-mail', {
+    body: inviteSchema,
+    status: 201,
+    answer: invitationSchema,
+  }),
+  route('delete', `${team}/invitations/{invitation}`, 'write', 'Revoke an invitation'),
+  route('post', `${team}/invitations/{invitation}/resend`, 'write', 'Send it with a new code', {
+    answer: invitationSchema,
+  }),
+  route('get', `${team}/tokens`, 'read', 'Your own access tokens', {
+    answer: listOf('tokens', tokenSchema),
+  }),
+  route('post', `${team}/tokens`, 'session', 'Make an access token; its text is shown once', {
+    body: createTokenSchema,
+    status: 201,
+    answer: newTokenSchema,
+  }),
+  route('delete', `${team}/tokens/{token}`, 'write', 'Revoke one of your tokens'),
+  route('get', `${team}/audit`, 'read', 'Who did what, newest first', {
+    query: auditQuerySchema,
+    answer: auditPageSchema,
+  }),
+];
+
+const surveys: ApiRoute[] = [
+  route('get', `${team}/overview`, 'read', 'Where the collaboration stands', {
+    answer: overviewSchema,
+  }),
+  route('get', `${team}/surveys`, 'read', 'Surveys, every star counted once', {
+    answer: surveyListSchema,
+  }),
+  route('post', `${team}/surveys`, 'write', 'Create a survey', {
+    body: createSurveySchema,
+    status: 201,
+    answer: surveySchema,
+  }),
+  route('get', `${team}/surveys/{survey}`, 'read', 'One survey', { answer: surveySchema }),
+  route('patch', `${team}/surveys/{survey}`, 'write', 'Change a survey', {
+    body: updateSurveySchema,
+    answer: surveySchema,
+  }),
+  route('get', `${team}/surveys/{survey}/targets`, 'read', 'Targets of a survey', {
+    query: pageSchema,
+    answer: targetListSchema,
+  }),
+  route('get', `${team}/surveys/{survey}/companions`, 'read', 'Companions of a survey', {
+    answer: listOf('companions', companionSchema),
+  }),
+  route('get', `${team}/surveys/{survey}/maps`, 'read', 'The state of each target’s map', {
+    answer: surveyMapsSchema,
+  }),
+  route('post', `${team}/surveys/{survey}/maps`, 'run', 'Compute the maps that are missing', {
+    status: 202,
+    answer: jobSchema,
+  }),
+  route('get', `${team}/targets/{target}`, 'read', 'One target', { answer: targetSchema }),
+  route('patch', `${team}/targets/{target}`, 'write', 'Leave a target out, or take it in again', {
+    body: leaveOutSchema,
+    answer: targetSchema,
+  }),
+  route(
+    'get',
+    `${team}/maps/{map}`,
+    'read',
+    'A completeness map; as bytes: uint16, little-endian',
+    {
+      answer: mapViewSchema,
+      files: bytes,
+    },
+  ),
+  route('get', `${team}/uploads`, 'read', 'Uploads, newest first', {
+    query: pageSchema.extend({ survey: z.string().optional() }),
+    answer: listOf('uploads', uploadSchema),
+  }),
+  route('post', `${team}/uploads`, 'write', 'Send a file and read its report; stores no rows yet', {
+    query: uploadQuerySchema,
+    isUpload: true,
+    status: 201,
+    answer: uploadSchema,
+  }),
+  route('get', `${team}/uploads/{upload}`, 'read', 'One upload and its report', {
+    answer: uploadSchema,
+  }),
+  route('patch', `${team}/uploads/{upload}`, 'write', 'Change how the file is read', {
+    body: uploadSettingsSchema,
+    answer: uploadSchema,
+  }),
+  route('post', `${team}/uploads/{upload}/store`, 'write', 'Store what the file holds', {
+    answer: uploadSchema,
+  }),
+  route('get', `${team}/uploads/{upload}/file`, 'read', 'The original bytes', { files: bytes }),
+  route('get', `${team}/cooling-tables`, 'read', 'Cooling tables', {
+    answer: listOf('coolingTables', coolingTableSchema),
+  }),
+];
+
+const analyses: ApiRoute[] = [
+  route('get', `${team}/populations`, 'read', 'Every version of every population', {
+    answer: populationListSchema,
+  }),
+  route('post', `${team}/populations`, 'write', 'Save a population', {
+    body: createPopulationSchema,
+    status: 201,
+    answer: populationSchema,
+  }),
+  route('get', `${team}/populations/{population}`, 'read', 'The newest version, or one of them', {
+    query: populationVersionQuerySchema,
+    answer: populationSchema,
+  }),
+  route('patch', `${team}/populations/{population}`, 'write', 'Share a version with all', {
+    query: populationVersionQuerySchema,
+    body: sharePopulationSchema,
+    answer: populationSchema,
+  }),
+  route('post', `${team}/populations/{population}/versions`, 'write', 'Save a new version', {
+    body: createVersionSchema,
+    status: 201,
+    answer: populationSchema,
+  }),
+  route('get', `${team}/analyses`, 'read', 'Analyses and their runs', {
+    answer: listOf('analyses', analysisSchema),
+  }),
+  route('post', `${team}/analyses`, 'write', 'Create an analysis', {
+    body: createAnalysisSchema,
+    status: 201,
+    answer: analysisSchema,
+  }),
+  route('get', `${team}/analyses/{analysis}`, 'read', 'One analysis', { answer: analysisSchema }),
+  route('patch', `${team}/analyses/{analysis}`, 'write', 'Change an analysis', {
+    body: updateAnalysisSchema,
+    answer: analysisSchema,
+  }),
+  route('delete', `${team}/analyses/{analysis}`, 'write', 'Delete a draft'),
+  route('post', `${team}/analyses/{analysis}/copy`, 'write', 'Copy to a draft of your own', {
+    body: copyAnalysisSchema,
+    status: 201,
+    answer: analysisSchema,
+  }),
+  route('get', `${team}/analyses/{analysis}/runs`, 'read', 'Runs, newest first', {
+    answer: listOf('runs', runSummarySchema),
+  }),
+  route('post', `${team}/analyses/{analysis}/runs`, 'run', 'Start a run', {
+    status: 201,
+    answer: runSummarySchema,
+  }),
+  route('get', `${team}/runs/{run}`, 'read', 'A run with its inputs and its result', {
+    answer: runSchema,
+  }),
+  route('get', `${team}/runs/{run}/maps`, 'read', 'All maps of a run: uint16, little-endian', {
+    files: bytes,
+  }),
+  route('get', `${team}/runs/{run}/exports/{file}`, 'read', 'A run as CSV, JSON, LaTeX or SVG', {
+    files: ['text/csv', 'application/json', 'application/x-tex', 'image/svg+xml'],
+  }),
+  route('get', `${team}/jobs`, 'read', 'Jobs, open ones first', {
+    answer: listOf('jobs', jobSchema),
+  }),
+  route('get', `${team}/jobs/{job}`, 'read', 'One job and how far it is', { answer: jobSchema }),
+  route('post', `${team}/jobs/{job}/cancel`, 'run', 'Stop a job', { answer: jobSchema }),
+  route('post', `${team}/jobs/{job}/retry`, 'run', 'Start a stopped or failed job again', {
+    answer: jobSchema,
+  }),
+];
+
+const itself = route('get', '/api/v1/openapi.json', 'open', 'This document', {
+  answer: z.record(z.string(), z.unknown()),
+});
+
+/** Every method of every address below /api/v1. */
+export const apiRoutes: readonly ApiRoute[] = [itself, ...people, ...surveys, ...analyses];
