@@ -1,0 +1,192 @@
+import { Op, QueryTypes } from 'sequelize';
+import type { Actor } from '@/lib/access/actor';
+import { may } from '@/lib/access/permissions';
+import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
+import type { JobView } from '@/lib/schemas/jobs';
+import type { Overview } from '@/lib/schemas/overview';
+import type { SurveyView } from '@/lib/schemas/surveys';
+import { CollaborationRow, database, JobRow, MemberRow } from '@/models';
+import { listAnalyses } from './analyses';
+import { describeJobs } from './jobs';
+import { describeSteps, type HistoryRun } from './limit-history';
+import { listSurveys } from './surveys';
+
+const LOG_LENGTH = 12;
+
+/** The lead analysis: the one that an owner chose, until then the one with the newest result. */
+function leadOf(analyses: AnalysisView[], settings: Record<string, unknown>) {
+  const chosen = analyses.find(({ id }) => id === settings.leadAnalysisId);
+  if (chosen) return chosen;
+  const finishedAt = ({ runs }: AnalysisView) =>
+    runs.reduce((newest, run) => (run.limit === null ? newest : max(newest, run.finishedAt)), '');
+  const [newest] = analyses
+    .filter((analysis) => finishedAt(analysis) !== '')
+    .sort((a, b) => (finishedAt(a) < finishedAt(b) ? 1 : -1));
+  return newest ?? null;
+}
+
+const max = (a: string, b: string | null) => (b !== null && b > a ? b : a);
+
+/** Finished runs of an analysis, oldest first, with what their labels are made from. */
+function readHistory(analysisId: string): Promise<HistoryRun[]> {
+  return database().query<HistoryRun>(
+    `select finished_at as at, number as run, recipe,
+       (result->'answer'->>'limit')::float8 as "limit",
+       (result->'zero'->>'limit')::float8 as "zeroLimit",
+       (result->>'stars')::int as stars, jsonb_array_length(result->'counted') as detections,
+       inputs->'population' as population, inputs->>'cooling' as cooling,
+       inputs->>'engineVersion' as "engineVersion", inputs_digest as "inputsDigest"
+     from run where analysis_id = $1 and result is not null order by number`,
+    { bind: [analysisId], type: QueryTypes.SELECT },
+  );
+}
+
+type Waiting = Overview['waiting'];
+
+function failedMaps(slug: string, surveys: SurveyView[]): Waiting {
+  return surveys
+    .filter(({ isArchived, maps }) => !isArchived && maps.failed > 0)
+    .map((survey) => ({
+      fact: survey.maps.failed === 1 ? '1 map failed' : `${survey.maps.failed} maps failed`,
+      detail: `${survey.name}: each target says why`,
+      verb: 'Look',
+      address: `/${slug}/surveys/${survey.slug}`,
+    }));
+}
+
+function failedJobs(slug: string, surveys: SurveyView[], analyses: AnalysisView[]): Waiting {
+  const ofSurveys = surveys
+    .filter(({ isArchived, mapJob }) => !isArchived && mapJob?.status === 'failed')
+    .map(({ name, slug: survey, mapJob }) => ({
+      fact: `The maps of ${name} were not computed`,
+      detail: mapJob?.fault ?? '',
+      verb: 'Open',
+      address: `/${slug}/surveys/${survey}`,
+    }));
+  const ofAnalyses = analyses
+    .filter(({ state }) => state === 'failed')
+    .map(({ key, runs }) => {
+      const failed = runs.find(({ job }) => job.status === 'failed');
+      return {
+        fact: `Run ${failed?.number} of ${key} failed`,
+        detail: failed?.job.fault ?? '',
+        verb: 'Open',
+        address: `/${slug}/analyses/${key}`,
+      };
+    });
+  return [...ofSurveys, ...ofAnalyses];
+}
+
+interface Candidates {
+  survey: string;
+  slug: string;
+  names: string[];
+}
+
+/** Candidates that nobody has decided on, inside the ranges of the lead analysis. */
+async function undecidedCandidates(actor: Actor, lead: AnalysisView | null): Promise<Waiting> {
+  if (!lead) return [];
+  const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } =
+    lead.population.definition;
+  const recipe: AnalysisRecipe = lead.recipe;
+  const rows = await database().query<Candidates>(
+    `select s.name as survey, s.slug, array_agg(t.name || ' ' || c.name order by t.name, c.name) as names
+     from companion c join target t on t.id = c.target_id join survey s on s.id = t.survey_id
+     where c.collaboration_id = $1 and t.survey_id = any($2::uuid[]) and t.left_out_reason is null
+       and c.status in ('candidate', 'ambiguous')
+       and c.mass_mjup between $3 and $4 and c.semi_major_axis_au between $5 and $6
+     group by s.id order by s.position`,
+    {
+      bind: [
+        actor.collaborationId,
+        recipe.surveyIds,
+        massMinMjup,
+        massMaxMjup,
+        semiMajorAxisMinAu,
+        semiMajorAxisMaxAu,
+      ],
+      type: QueryTypes.SELECT,
+    },
+  );
+  return rows.map(({ survey, slug, names }) => ({
+    fact:
+      names.length === 1
+        ? '1 undecided candidate inside the ranges'
+        : `${names.length} undecided candidates inside the ranges`,
+    detail: `${survey}: ${names.join(', ')}`,
+    verb: 'Look',
+    address: `/${actor.collaboration}/surveys/${slug}`,
+  }));
+}
+
+async function openJobs(collaborationId: string): Promise<JobView[]> {
+  const rows = await JobRow.findAll({
+    where: { collaborationId, status: { [Op.in]: ['waiting', 'running'] } },
+    order: [['createdAt', 'ASC']],
+  });
+  return describeJobs(rows);
+}
+
+function readLog(collaborationId: string) {
+  return database().query<{ at: Date; who: string; what: string }>(
+    `select a.created_at as at, coalesce(p.name, 'somebody who left') as who, a.summary as what
+     from audit_entry a left join person p on p.id = a.person_id
+     where a.collaboration_id = $1 and a.summary <> ''
+       and a.action = any($2::text[])
+     order by a.created_at desc, a.id desc limit $3`,
+    { bind: [collaborationId, EVERYBODYS_NEWS, LOG_LENGTH], type: QueryTypes.SELECT },
+  );
+}
+
+/** Work on the science, which every member may read; who was invited or removed is the owners'. */
+const EVERYBODYS_NEWS = [
+  'create-survey',
+  'change-survey',
+  'import',
+  'import-cooling-table',
+  'save-population',
+  'share-population',
+  'save-analysis',
+  'copy-analysis',
+  'run-analysis',
+  'remove-analysis',
+];
+
+/** Where a collaboration stands, and what waits for a person. */
+export async function getOverview(actor: Actor): Promise<Overview> {
+  const { collaborationId, collaboration: slug } = actor;
+  const [row, people, surveys, { analyses }, jobs, log] = await Promise.all([
+    CollaborationRow.findByPk(collaborationId, { rejectOnEmpty: true }),
+    MemberRow.count({ where: { collaborationId } }),
+    listSurveys(actor),
+    listAnalyses(actor),
+    openJobs(collaborationId),
+    readLog(collaborationId),
+  ]);
+  const lead = leadOf(analyses, row.settings);
+  const [history, candidates] = await Promise.all([
+    lead ? readHistory(lead.id) : [],
+    undecidedCandidates(actor, lead),
+  ]);
+  return {
+    name: row.name,
+    slug,
+    people,
+    surveys,
+    lead: lead?.key ?? null,
+    analyses,
+    history: describeSteps(history),
+    waiting: [
+      ...failedJobs(slug, surveys.surveys, analyses),
+      ...failedMaps(slug, surveys.surveys),
+      ...candidates,
+    ],
+    jobs,
+    log: log.map(({ at, who, what }) => ({ at: at.toISOString(), who, what })),
+    can: {
+      invite: may(actor, 'invite'),
+      addSurvey: may(actor, 'create-survey'),
+      addAnalysis: may(actor, 'save-analysis', { isOwn: true }),
+    },
+  };
+}
