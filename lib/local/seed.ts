@@ -12,6 +12,7 @@ import { createToken } from '@/lib/services/tokens';
 import {
   CollaborationRow,
   closeDatabase,
+  database,
   inTransaction,
   JobRow,
   MemberRow,
@@ -131,10 +132,14 @@ async function importSurvey(
 }
 
 function startWorker(): ChildProcess {
-  return spawn(process.execPath, ['--enable-source-maps', path.resolve(config().bundleDirectory, 'workers/main.js')], {
-    env: { ...process.env },
-    stdio: ['ignore', 'ignore', 'inherit'],
-  });
+  return spawn(
+    process.execPath,
+    ['--enable-source-maps', path.resolve(config().bundleDirectory, 'workers/main.js')],
+    {
+      env: { ...process.env },
+      stdio: ['ignore', 'ignore', 'inherit'],
+    },
+  );
 }
 
 async function writeSecret(name: string, text: string): Promise<void> {
@@ -151,6 +156,7 @@ async function removeHalfMade(collaboration: CollaborationRow): Promise<void> {
 }
 
 async function seed(): Promise<void> {
+  database();
   const known = await CollaborationRow.findOne({ where: { slug: SLUG } });
   if (known?.settings.isDemonstrationReady === true) {
     say('the demonstration is there already');
