@@ -405,4 +405,6 @@ drop function refuse_result_change();
 /** Called by umzug with { context } and by the command line of Sequelize with the interface itself. */
 const run = (sql) => (given) => (given.context ?? given).sequelize.query(sql);
 
-module.exports = { up: run(up), down: run(down) };
+// Two statements, so that the way back is seen by import as well as by require.
+exports.up = run(up);
+exports.down = run(down);

@@ -29,4 +29,6 @@ drop table rate_limit;
 /** Called by umzug with { context } and by the command line of Sequelize with the interface itself. */
 const run = (sql) => (given) => (given.context ?? given).sequelize.query(sql);
 
-module.exports = { up: run(up), down: run(down) };
+// Two statements, so that the way back is seen by import as well as by require.
+exports.up = run(up);
+exports.down = run(down);
