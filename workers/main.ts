@@ -83,6 +83,20 @@ async function main(): Promise<void> {
   await runner.promise;
 }
 
+/**
+ * A thread that is ended at its time limit may still report that it ran out of memory, to nobody:
+ * its item has failed already. Anything else that nobody caught ends the process; the queue hands
+ * its jobs to the next one.
+ */
+process.on('uncaughtException', (error: Error & { code?: string }) => {
+  if (error.code === 'ERR_WORKER_OUT_OF_MEMORY') {
+    log('warning', 'thread ended late', describeError(error));
+    return;
+  }
+  log('error', 'worker ended', describeError(error));
+  process.exit(1);
+});
+
 main().catch((error: unknown) => {
   log('error', 'worker ended', describeError(error));
   process.exit(1);

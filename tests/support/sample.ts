@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import { foldName } from '@/lib/formats';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { PopulationDefinition } from '@/lib/schemas/populations';
@@ -12,6 +13,7 @@ import {
   TargetRow,
 } from '@/models';
 import { digestOf } from '@/models/digest';
+import { POPULATION } from './population';
 
 /** A grid small enough that hundreds of maps take seconds. */
 export const SMALL_GRID = {
@@ -24,18 +26,27 @@ const next = () => ++made;
 
 export async function buildSurvey(
   collaborationId: string,
-  given: { name?: string; band?: string; leadId?: string; mapSettings?: unknown } = {},
+  given: {
+    name?: string;
+    band?: string;
+    leadId?: string;
+    mapSettings?: unknown;
+    transaction?: Transaction;
+  } = {},
 ): Promise<SurveyRow> {
   const name = given.name ?? `Survey ${next()}`;
-  return SurveyRow.create({
-    collaborationId,
-    slug: name.toLowerCase().replace(/[^a-z0-9]+/g, '-'),
-    name,
-    band: given.band ?? 'H',
-    leadId: given.leadId ?? null,
-    position: await SurveyRow.count({ where: { collaborationId } }),
-    mapSettings: mapSettingsSchema.parse(given.mapSettings ?? SMALL_GRID),
-  });
+  return SurveyRow.create(
+    {
+      collaborationId,
+      slug: name.toLowerCase().replace(/[^a-z0-9]+/g, '-'),
+      name,
+      band: given.band ?? 'H',
+      leadId: given.leadId ?? null,
+      position: await SurveyRow.count({ where: { collaborationId } }),
+      mapSettings: mapSettingsSchema.parse(given.mapSettings ?? SMALL_GRID),
+    },
+    { transaction: given.transaction },
+  );
 }
 
 export interface CurveFields {
@@ -47,15 +58,17 @@ export interface CurveFields {
   coverage?: number[] | null;
 }
 
+const curveOf = (given: CurveFields) => ({
+  band: given.band ?? 'H',
+  epoch: given.epoch ?? null,
+  nSigma: given.nSigma ?? 5,
+  separationArcsec: given.separationArcsec ?? [0.15, 0.3, 0.6, 1.2, 2.5, 5],
+  contrastMag: given.contrastMag ?? [7, 9.5, 11.5, 13, 14, 14.2],
+  coverage: given.coverage ?? null,
+});
+
 export async function buildCurve(target: TargetRow, given: CurveFields = {}) {
-  const curve = {
-    band: given.band ?? 'H',
-    epoch: given.epoch ?? null,
-    nSigma: given.nSigma ?? 5,
-    separationArcsec: given.separationArcsec ?? [0.15, 0.3, 0.6, 1.2, 2.5, 5],
-    contrastMag: given.contrastMag ?? [7, 9.5, 11.5, 13, 14, 14.2],
-    coverage: given.coverage ?? null,
-  };
+  const curve = curveOf(given);
   return ContrastCurveRow.create({
     collaborationId: target.collaborationId,
     targetId: target.id,
@@ -94,22 +107,32 @@ export async function buildTarget(survey: SurveyRow, given: TargetFields = {}) {
 }
 
 /** Invented stars, each with a curve of its own: no two maps are alike. */
-export async function buildStars(survey: SurveyRow, count: number): Promise<TargetRow[]> {
-  const targets: TargetRow[] = [];
-  for (let i = 0; i < count; i++) {
-    const depth = (i % 17) * 0.13;
-    targets.push(
-      await buildTarget(survey, {
-        name: `Star ${String(i + 1).padStart(4, '0')}`,
-        distancePc: 12 + (i % 53) * 0.9 + i * 0.001,
-        ageMyr: 20 + (i % 29) * 5,
-        ageLowerMyr: 18 + (i % 29) * 5,
-        ageUpperMyr: 24 + (i % 29) * 5,
-        curves: [{ contrastMag: [7, 9.5, 11.5, 13, 14, 14.2].map((mag) => mag + depth) }],
-      }),
-    );
-  }
-  return targets;
+export async function buildStars(survey: SurveyRow, count: number): Promise<void> {
+  const { collaborationId, id: surveyId } = survey;
+  const names = Array.from({ length: count }, (_, i) => `Star ${String(i + 1).padStart(4, '0')}`);
+  const stars = await StarRow.bulkCreate(
+    names.map((name) => ({ collaborationId, name, foldedName: foldName(name) })),
+    { returning: true },
+  );
+  const targets = await TargetRow.bulkCreate(
+    stars.map(({ id: starId, name, foldedName }, i) => ({
+      ...{ collaborationId, surveyId, starId, name, foldedName },
+      distancePc: 12 + (i % 53) * 0.9 + i * 0.001,
+      distanceErrorPc: 0.3,
+      ageMyr: 20 + (i % 29) * 5,
+      ageLowerMyr: 18 + (i % 29) * 5,
+      ageUpperMyr: 24 + (i % 29) * 5,
+      magnitudes: { H: { valueMag: 6.2, errorMag: null } },
+    })),
+    { returning: true },
+  );
+  await ContrastCurveRow.bulkCreate(
+    targets.map(({ id: targetId }, i) => {
+      const depth = (i % 17) * 0.13;
+      const curve = curveOf({ contrastMag: [7, 9.5, 11.5, 13, 14, 14.2].map((m) => m + depth) });
+      return { collaborationId, targetId, ...curve, digest: digestOf(curve) };
+    }),
+  );
 }
 
 export function buildCompanion(target: TargetRow, given: Partial<CompanionRow['dataValues']> = {}) {
@@ -125,16 +148,6 @@ export function buildCompanion(target: TargetRow, given: Partial<CompanionRow['d
     ...given,
   });
 }
-
-export const POPULATION: PopulationDefinition = {
-  form: 'power-law',
-  massMinMjup: 3,
-  massMaxMjup: 40,
-  semiMajorAxisMinAu: 10,
-  semiMajorAxisMaxAu: 200,
-  massIndex: -0.31,
-  semiMajorAxisIndex: 0.39,
-};
 
 export async function buildPopulation(
   collaborationId: string,
