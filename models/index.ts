@@ -64,14 +64,7 @@ function associate(): void {
   AuditEntryRow.belongsTo(PersonRow, { as: 'person', foreignKey: 'personId' });
 }
 
-/** A connection with every model defined on it. Tests and the worker make their own. */
-export function connect(databaseUrl: string, poolSize = 10): Sequelize {
-  const sequelize = new Sequelize(databaseUrl, {
-    dialect: 'postgres',
-    logging: false,
-    pool: { max: poolSize, min: 0, idle: 10_000 },
-    dialectOptions: { idle_in_transaction_session_timeout: 60_000 },
-  });
+function defineModels(sequelize: Sequelize): void {
   defineCollaboration(sequelize);
   definePerson(sequelize);
   defineSession(sequelize);
@@ -92,14 +85,34 @@ export function connect(databaseUrl: string, poolSize = 10): Sequelize {
   defineRun(sequelize);
   defineAuditEntry(sequelize);
   associate();
-  return sequelize;
+}
+
+function open(databaseUrl: string, poolSize: number): Sequelize {
+  return new Sequelize(databaseUrl, {
+    dialect: 'postgres',
+    logging: false,
+    pool: { max: poolSize, min: 0, idle: 10_000 },
+    dialectOptions: { idle_in_transaction_session_timeout: 60_000 },
+  });
 }
 
 const holder = globalThis as typeof globalThis & { rareboundDatabase?: Sequelize };
 
-/** The process's one connection, opened at first use: importing a module never connects. */
+/** The connection on which this copy of the module has defined its models. */
+let definedOn: Sequelize | undefined;
+
+/**
+ * The process's one connection, opened at first use: importing a module never connects.
+ *
+ * The web build holds several copies of this module, for pages and for handlers; they share the
+ * pool, and each defines its own classes on it.
+ */
 export function database(): Sequelize {
-  holder.rareboundDatabase ??= connect(config().databaseUrl, config().databasePool);
+  holder.rareboundDatabase ??= open(config().databaseUrl, config().databasePool);
+  if (definedOn !== holder.rareboundDatabase) {
+    definedOn = holder.rareboundDatabase;
+    defineModels(definedOn);
+  }
   return holder.rareboundDatabase;
 }
 
