@@ -3,6 +3,7 @@ import type { ZodType } from 'zod';
 import { type Actor, actorIn, type KnownPerson, type Scope } from '@/lib/access/actor';
 import { addressOf, countAttempt, type LimitName } from '@/lib/access/attempts';
 import { knownPerson, requireSameOrigin } from '@/lib/access/requests';
+import { config } from '@/lib/config';
 import { AccessError, LabError, NotSignedIn } from '@/lib/errors';
 import { parseInput, parseQuery } from '@/lib/schemas/input';
 import { logRequest, problemOf } from './problem';
@@ -40,6 +41,9 @@ function finish(response: Response, requestId: string): Response {
   headers.set('X-Content-Type-Options', 'nosniff');
   headers.set('X-Request-Id', requestId);
   headers.set('Referrer-Policy', 'same-origin');
+  if (config().webAddress.startsWith('https://')) {
+    headers.set('Strict-Transport-Security', 'max-age=31536000; includeSubDomains');
+  }
   if (!headers.has('Cache-Control')) headers.set('Cache-Control', 'no-store');
   if (!headers.has('Content-Security-Policy')) {
     headers.set('Content-Security-Policy', "default-src 'none'; frame-ancestors 'none'; sandbox");
