@@ -1,4 +1,5 @@
-import { beforeEach, describe, expect, it } from 'vitest';
+import { Client } from 'pg';
+import { beforeEach, describe, expect, it, vi } from 'vitest';
 import {
   PATCH as changeRoles,
   DELETE as removeMember,
@@ -24,7 +25,33 @@ import {
   webAddress,
 } from '../support/people';
 
-const { query } = withDatabase();
+const { query, url } = withDatabase();
+
+/** Lets the requests of `start` meet at the collaboration's members, then go on together. */
+async function atOnce<T>(collaborationId: string, start: () => Promise<T>[]): Promise<T[]> {
+  const client = new Client({ connectionString: url });
+  await client.connect();
+  try {
+    await client.query('begin');
+    await client.query('select id from member where collaboration_id = $1 for update', [
+      collaborationId,
+    ]);
+    const answers = start();
+    await vi.waitFor(
+      async () => {
+        const waiting = await query(
+          "select 1 from pg_stat_activity where datname = current_database() and wait_event_type = 'Lock'",
+        );
+        if (waiting.length < answers.length) throw new Error('not all are waiting yet');
+      },
+      { timeout: 10_000 },
+    );
+    await client.query('commit');
+    return await Promise.all(answers);
+  } finally {
+    await client.end();
+  }
+}
 
 beforeEach(async () => {
   await query('delete from rate_limit');
@@ -148,7 +175,7 @@ describe('PATCH …/members/{id}', () => {
     const second = await createPerson();
     const secondId = await addMember(team.collaboration, second, ['owner']);
     const { cookie } = await sessionCookieOf(second);
-    const answers = await Promise.all([
+    const answers = await atOnce(team.collaboration.id, () => [
       team.change(team.memberIds.owner, ['author']),
       team.change(secondId, ['author'], { cookie, origin: webAddress() }),
     ]);
