@@ -11,7 +11,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
 import { describeFault, type Fault } from '@/lib/errors';
 import type { UploadReport, UploadSettings } from '@/lib/schemas/uploads';
-import type { IncomingEntry } from './import-screen';
+import type { IncomingEntry } from './incoming-entry';
 
 const SHOWN = 12;
 

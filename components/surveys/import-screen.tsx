@@ -13,19 +13,7 @@ import type { SurveyView } from '@/lib/schemas/surveys';
 import type { UploadKindName, UploadSettings, UploadView } from '@/lib/schemas/uploads';
 import { FileCheck } from './file-check';
 import { fileKinds } from './file-kinds';
-
-/** One file on its way in: as it was given, what reading it said, and whether it is stored. */
-export interface IncomingEntry {
-  key: string;
-  file: File;
-  kind: UploadKindName;
-  settings: UploadSettings;
-  state: 'reading' | 'read' | 'refused' | 'storing' | 'stored';
-  upload: UploadView | null;
-  problem: ApiProblem | null;
-  /** Any other failure, as a sentence. */
-  failure: string | null;
-}
+import type { IncomingEntry } from './incoming-entry';
 
 /** Three steps on one page: files, check, store. Storing is one transaction a file. */
 export function ImportScreen({

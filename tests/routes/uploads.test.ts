@@ -12,7 +12,15 @@ import { POST as storeUpload } from '@/app/api/v1/collaborations/[collaboration]
 import { POST as sendUpload } from '@/app/api/v1/collaborations/[collaboration]/uploads/route';
 import { closeReaders } from '@/lib/services/reading';
 import { withDatabase } from '../support/database';
-import { bearer, call, createCollaborationWith, tokenOf, webAddress } from '../support/people';
+import {
+  addMember,
+  bearer,
+  call,
+  createCollaborationWith,
+  createPerson,
+  tokenOf,
+  webAddress,
+} from '../support/people';
 
 const database = withDatabase();
 const bad = path.resolve(import.meta.dirname, '../fixtures/bad');
@@ -31,12 +39,13 @@ interface Row {
 const rows: Row[] = parse(readFileSync(path.join(bad, 'index.csv')), { columns: true });
 
 let slug = '';
-let token = '';
 let studentToken = '';
 let surveys = 0;
 let coolingId = '';
 
-const headers = () => bearer(token);
+/** Uploads are counted per person; several owners share the many that this file sends. */
+const owners: string[] = [];
+const headers = () => bearer(owners[surveys % owners.length]);
 const inTeam = (params: Record<string, string> = {}) => ({ collaboration: slug, ...params });
 
 async function newSurvey(body: Record<string, unknown> = {}): Promise<string> {
@@ -122,7 +131,12 @@ const map =
 beforeAll(async () => {
   const { collaboration, people } = await createCollaborationWith(['owner', 'student']);
   slug = collaboration.slug;
-  token = await tokenOf(people.owner, collaboration);
+  owners.push(await tokenOf(people.owner, collaboration));
+  for (let i = 0; i < 3; i++) {
+    const person = await createPerson();
+    await addMember(collaboration, person, ['owner']);
+    owners.push(await tokenOf(person, collaboration));
+  }
   studentToken = await tokenOf(people.student, collaboration);
   await store(
     await send({ kind: 'cooling-tables', bytes: cooling, settings: { title: 'Three bands' } }),

@@ -13,6 +13,6 @@ export const GET = collaborationRoute(
 
 /** The body is the file itself, streamed; nothing is stored of a file that cannot be read. */
 export const POST = collaborationRoute(
-  { scope: 'write', query: uploadQuerySchema, rawBody: true, status: 201 },
+  { scope: 'write', query: uploadQuerySchema, rawBody: true, limit: 'uploads', status: 201 },
   ({ actor, query, request }) => receiveUpload(actor, query, request),
 );
