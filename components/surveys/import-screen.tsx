@@ -10,7 +10,7 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { SurveyView } from '@/lib/schemas/surveys';
-import type { UploadKindName, UploadSettings } from '@/lib/schemas/uploads';
+import type { UploadKindName } from '@/lib/schemas/uploads';
 import { FileCheck } from './file-check';
 import { fileKinds } from './file-kinds';
 import type { IncomingEntry } from './incoming-entry';
