@@ -117,11 +117,17 @@ describe('a worker that is asked to stop', () => {
     const first = await startWorker(main, { threads: 1 });
     const jobId = await askForMaps(survey);
     await underWay(jobId, 20);
+    const beats = await query<{ count: number }>(
+      `select count(*)::int from worker_heartbeat where process_id like '%:' || $1`,
+      [String(first.pid)],
+    );
+    expect(beats).toEqual([{ count: 2 }]);
     expect(await first.stop()).toBe(0);
     const given = await jobOf(jobId);
     expect(given.status).toBe('waiting');
     expect(given.attempts).toBe(0);
-    expect(await query('select worker_id from worker_heartbeat')).toEqual([]);
+    const signs = `select worker_id from worker_heartbeat where process_id like '%:' || $1`;
+    expect(await query(signs, [String(first.pid)])).toEqual([]);
     await startWorker(main, { threads: 2 });
     const job = await untilEnded(jobId);
     expect(job.status).toBe('done');
