@@ -10,6 +10,7 @@ import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatRange } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
+import { lawNames } from './prior-choice';
 
 export function newestFinished(analysis: AnalysisView): RunSummary | undefined {
   return analysis.runs.find((run) => run.job.status === 'done' && run.limit !== null);
@@ -103,9 +104,7 @@ export function AnalysisTable({
                 {run?.limit != null && run.quantity ? (
                   <>
                     <span className="limit">{formatLimit(run.limit, run.quantity)}</span>
-                    <span className="block text-chart text-ink3">
-                      {describeLevel(run.credibleLevel)}
-                    </span>
+                    <span className="block text-chart text-ink3">{limitNote(analysis, run)}</span>
                   </>
                 ) : (
                   '–'
@@ -120,6 +119,12 @@ export function AnalysisTable({
       </TableBody>
     </Table>
   );
+}
+
+/** Level and prior beside the number; the prior of a changed recipe is not that of its run. */
+function limitNote(analysis: AnalysisView, run: RunSummary): string {
+  const level = describeLevel(run.credibleLevel);
+  return analysis.state === 'changed' ? level : `${level}, ${lawNames[analysis.recipe.prior.law]}`;
 }
 
 function rangeWords(definition: AnalysisView['population']['definition']): string {

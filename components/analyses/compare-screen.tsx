@@ -25,6 +25,7 @@ import {
 } from './compare-differences';
 import { ComparePlate } from './compare-plate';
 import { compareSentences } from './compare-words';
+import { inWords } from './name-words';
 
 interface CompareScreenProps {
   collaboration: string;
@@ -78,8 +79,9 @@ function asCompared(side: CompareScreenProps['sides'][number]): ComparedRun | un
 
 function titleOf(a: ComparedRun, b: ComparedRun): string {
   const [first, second] = [a.result.counted.length, b.result.counted.length];
-  if (first > 0 && second === 0)
-    return `With ${first === 1 ? 'one detection' : `${first} detections`} and with none`;
+  if (first > 0 && second === 0) {
+    return `With ${inWords(first)} detection${first === 1 ? '' : 's'} and with none`;
+  }
   return `${a.key} and ${b.key}`;
 }
 

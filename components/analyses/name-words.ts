@@ -3,9 +3,14 @@ import type { PopulationDefinition } from '@/lib/schemas/populations';
 
 const numbers = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine'];
 
+/** A small number as a word, a larger one as it is. */
+export function inWords(count: number): string {
+  return numbers[count] ?? String(count);
+}
+
 /** "two surveys", "12 surveys". */
 export function countSurveys(count: number): string {
-  return `${numbers[count] ?? count} survey${count === 1 ? '' : 's'}`;
+  return `${inWords(count)} survey${count === 1 ? '' : 's'}`;
 }
 
 /** A name that says what is asked: "Planets of 2–30 MJ at 20–300 AU, four surveys". */

@@ -11,7 +11,7 @@ export const likelihoodOptions: SwitchOption<Likelihood>[] = [
 
 export type PriorLaw = RatePrior['law'];
 
-const lawNames: Record<PriorLaw, string> = {
+export const lawNames: Record<PriorLaw, string> = {
   uniform: 'uniform',
   jeffreys: 'Jeffreys',
   'log-uniform': 'log-uniform',

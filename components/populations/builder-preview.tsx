@@ -140,33 +140,38 @@ function PreviewFacts({
   const level = describeLevel(setting.credibleLevel);
   const limit = (of: typeof zero) =>
     of === null || !of.posterior.constrained ? 'none' : formatLimit(of.limit, 'host_fraction');
-  const words = setting.prior.law === 'jeffreys' ? 'Jeffreys' : setting.prior.law;
   return (
-    <FactsStrip
-      facts={[
-        { name: 'mean detection probability', value: formatPercent(view.exposure / stars) },
-        {
-          name: 'sum over the stars',
-          value: formatSignificant(view.exposure, 3),
-          note: `of ${stars}`,
-        },
-        {
-          name: 'expected detections',
-          label: (
-            <>
-              detections if <i>f</i> were {formatPercent(setting.statedFraction).replace('.0', '')}
-            </>
-          ),
-          value: formatSignificant(setting.statedFraction * view.exposure, 2),
-        },
-        {
-          name: `${level}, ${countOf(withDetections?.counted.length ?? 0)}, ${words} f`,
-          value: limit(withDetections),
-          isBound: true,
-        },
-        { name: `${level}, zero detections, ${words} f`, value: limit(zero), isBound: true },
-      ]}
-    />
+    <>
+      <FactsStrip
+        facts={[
+          { name: 'mean detection probability', value: formatPercent(view.exposure / stars) },
+          {
+            name: 'sum over the stars',
+            value: formatSignificant(view.exposure, 3),
+            note: `of ${stars}`,
+          },
+          {
+            name: 'expected detections',
+            label: (
+              <>
+                detections if <i>f</i> were{' '}
+                {formatPercent(setting.statedFraction).replace('.0', '')}
+              </>
+            ),
+            value: formatSignificant(setting.statedFraction * view.exposure, 2),
+          },
+          {
+            name: `${level}, ${countOf(withDetections?.counted.length ?? 0)}`,
+            value: limit(withDetections),
+            isBound: true,
+          },
+          { name: `${level}, zero detections`, value: limit(zero), isBound: true },
+        ]}
+      />
+      <p className="-mt-1.5 mb-3 text-chart text-ink3">
+        Limits: {describePrior(setting.prior, 'host_fraction')}; every star once.
+      </p>
+    </>
   );
 }
 

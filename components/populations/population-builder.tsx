@@ -222,5 +222,5 @@ function BuilderState({
 }) {
   if (!version) return <StateMark kind="unsaved">Not saved yet</StateMark>;
   if (isChanged) return <StateMark kind="unsaved">Unsaved change</StateMark>;
-  return <StateMark kind="draft">{version.isShared ? 'Shared with all' : 'Own draft'}</StateMark>;
+  return <StateMark kind="draft">{version.isShared ? 'Shared with all' : 'Draft'}</StateMark>;
 }

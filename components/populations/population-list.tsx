@@ -84,9 +84,7 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
                   <Cell className="max-lg:hidden">{population.createdBy ?? '–'}</Cell>
                   <Cell className="max-md:hidden">{population.usedBy.join(', ') || '–'}</Cell>
                   <Cell className="whitespace-nowrap max-md:hidden">
-                    <StateMark kind="draft">
-                      {population.isShared ? 'Shared' : 'Own draft'}
-                    </StateMark>
+                    <StateMark kind="draft">{population.isShared ? 'Shared' : 'Draft'}</StateMark>
                   </Cell>
                 </Row>
               ))}

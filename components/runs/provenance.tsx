@@ -1,6 +1,6 @@
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
-import { formatPlain } from '@/lib/quantities/display';
-import type { RunView } from '@/lib/schemas/runs';
+import { formatPlain, formatSignificant } from '@/lib/quantities/display';
+import type { RunResult, RunView } from '@/lib/schemas/runs';
 import { durationOf, fingerprint, formatDay } from './time-words';
 
 /** Everything that a run's number was made from, a step each. */
@@ -37,7 +37,7 @@ export function provenanceSteps(collaboration: string, run: RunView): Provenance
     {
       kind: 'Maps',
       what: `${inputs.stars.length} maps, ${massMjup.length} × ${semiMajorAxisAu.length} nodes`,
-      by: `${inputs.eccentricity}; ${inputs.threshold}; ${inputs.combination}`,
+      by: inputs.eccentricity,
       fingerprint: run.inputsDigest ? fingerprint(run.inputsDigest) : undefined,
     },
     {
@@ -55,7 +55,6 @@ export function provenanceSteps(collaboration: string, run: RunView): Provenance
         run.finishedAt ? formatDay(run.finishedAt) : undefined,
         took,
         `engine ${run.engineVersion}`,
-        `seed ${run.seed}`,
       ]
         .filter(Boolean)
         .join(', '),
@@ -69,24 +68,35 @@ function leftOutWords(count: number): string | undefined {
   return `${count} left out with a reason`;
 }
 
-/** The whole digests, for whoever compares them. */
-export function DigestList({ run }: { run: RunView }) {
+/** What stands in no step: how maps were combined and judged, and the whole digests. */
+export function ProvenanceDetails({ run, result }: { run: RunView; result: RunResult }) {
+  const { inputs } = run;
   const rows = [
+    ['statement', result.statement.sentence],
+    ['threshold', inputs?.threshold],
+    ['stars in several surveys', inputs?.combination],
+    ['sum over stars', `${formatSignificant(result.exposure, 6)} of ${result.stars}`],
     ['inputs', run.inputsDigest],
     ['result', run.resultDigest],
-    ['population', run.inputs?.population.digest ?? null],
-  ].filter((row): row is [string, string] => row[1] !== null);
+    ['population', inputs?.population.digest],
+    ['seed', run.seed],
+  ].filter((row): row is [string, string] => Boolean(row[1]));
   return (
-    <details className="mt-3 text-note">
-      <summary className="w-max text-act max-md:py-3">Full fingerprints</summary>
+    <details className="mt-4 text-note">
+      <summary className="w-max text-act max-md:py-3">All conditions and full fingerprints</summary>
       <dl className="mt-2 grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-1 text-ink2">
-        {rows.map(([name, digest]) => (
+        {rows.map(([name, value]) => (
           <div key={name} className="contents">
             <dt className="text-ink3">{name}</dt>
-            <dd className="break-all">{digest}</dd>
+            <dd className="min-w-0 break-words [overflow-wrap:anywhere]">{value}</dd>
           </div>
         ))}
       </dl>
+      <ul className="mt-3 grid gap-1 text-ink2">
+        {result.statement.conditions.map((condition) => (
+          <li key={condition}>{condition}</li>
+        ))}
+      </ul>
     </details>
   );
 }

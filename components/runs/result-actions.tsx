@@ -23,6 +23,8 @@ interface ResultActionsProps {
   isUnsaved: boolean;
   /** A run is on its way. */
   isBusy: boolean;
+  /** At the foot of a narrow screen only what a thumb needs. */
+  placement: 'head' | 'foot';
   onUndo(): void;
   onSaved(): void;
 }
@@ -32,6 +34,7 @@ type Work = 'save' | 'copy' | 'run';
 /** What becomes of a change, and what may be done with a result. */
 export function ResultActions(props: ResultActionsProps) {
   const { collaboration, analysis, run, setting, isUnsaved, isBusy, onUndo, onSaved } = props;
+  const isFoot = props.placement === 'foot';
   const router = useRouter();
   const [work, setWork] = useState<Work>();
   const [problem, setProblem] = useState<string>();
@@ -71,9 +74,9 @@ export function ResultActions(props: ResultActionsProps) {
       {isUnsaved ? (
         <>
           <Button icon="undo" onClick={onUndo}>
-            Undo
+            {isFoot ? <span className="sr-only">Undo</span> : 'Undo'}
           </Button>
-          {analysis.can.copy && (
+          {analysis.can.copy && !(isFoot && mayChange) && (
             <Button
               icon="copy"
               variant={mayChange ? 'normal' : 'primary'}
@@ -85,24 +88,26 @@ export function ResultActions(props: ResultActionsProps) {
           )}
           {mayChange && (
             <Button variant="primary" onClick={save} isBusy={work === 'save'} disabledReason={wait}>
-              Save as run {next}
+              {isFoot ? `Run ${next}` : `Save as run ${next}`}
             </Button>
           )}
         </>
       ) : (
         <>
-          {analysis.can.copy && (
+          {analysis.can.copy && !isFoot && (
             <Button icon="copy" onClick={copy} isBusy={work === 'copy'}>
               Copy
             </Button>
           )}
           {run && (
-            <LinkButton href={compareAddress(collaboration, analysis)} icon="compare">
-              {analysis.parent ? `Compare with ${analysis.parent}` : 'Compare'}
-            </LinkButton>
+            <span className={isFoot ? '' : 'max-md:hidden'}>
+              <LinkButton href={compareAddress(collaboration, analysis)} icon="compare">
+                {analysis.parent && !isFoot ? `Compare with ${analysis.parent}` : 'Compare'}
+              </LinkButton>
+            </span>
           )}
-          {run && <ExportMenu collaboration={collaboration} run={run} />}
-          {run && (
+          {run && !isFoot && <ExportMenu collaboration={collaboration} run={run} />}
+          {run && (!isFoot || needsRun(analysis, run)) && (
             <Button
               variant={needsRun(analysis, run) ? 'primary' : 'normal'}
               onClick={runAgain}

@@ -17,12 +17,13 @@ import { formatLimit } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
+import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
 import { orNull, savedAnswer } from './live-answer';
 import { sampleOf } from './live-sample';
 import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
-import { DigestList, Provenance, provenanceSteps } from './provenance';
+import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
 import { ResultConsole } from './result-console';
 import { conditionRows, ResultStatement } from './result-statement';
 import { SensitivitySection } from './sensitivity-section';
@@ -232,27 +233,36 @@ export function ResultBody(props: ResultBodyProps) {
           companions={inputs.companions}
           onDefinition={(next) => onSetting({ ...setting, definition: next })}
         />
-        <FoldSection
-          number={3}
-          title="Limits by credible level"
-          answer={[0.9, 0.99]
-            .flatMap((level) => {
-              const row = stepLevel(level);
-              const limit = quantity === 'host_fraction' ? row?.hostFraction : row?.meanNumber;
-              return row
-                ? [`${percentBelow(limit ?? null)}\u2009% at ${describeLevel(level)}`]
-                : [];
-            })
-            .join(', ')}
-        >
-          <LevelTable
-            levels={levels}
-            credibleLevel={shownSetting.credibleLevel}
-            quantity={quantity}
-            detections={counted.length}
-            foot={foot}
+        <div className="grid min-w-0 content-start md:gap-y-8">
+          <FoldSection
+            number={3}
+            title="Limits by credible level"
+            answer={[0.9, 0.99]
+              .flatMap((level) => {
+                const row = stepLevel(level);
+                const limit = quantity === 'host_fraction' ? row?.hostFraction : row?.meanNumber;
+                return row
+                  ? [`${percentBelow(limit ?? null)}\u2009% at ${describeLevel(level)}`]
+                  : [];
+              })
+              .join(', ')}
+          >
+            <LevelTable
+              levels={levels}
+              credibleLevel={shownSetting.credibleLevel}
+              quantity={quantity}
+              detections={counted.length}
+              foot={foot}
+            />
+          </FoldSection>
+          <DetectionsSection
+            companions={inputs.companions}
+            undecided={inputs.undecided}
+            counted={counted}
+            outside={outside}
+            ofRun={isLive ? run.number : undefined}
           />
-        </FoldSection>
+        </div>
       </div>
       <div className="md:mt-8">
         <StarsSection
@@ -275,7 +285,7 @@ export function ResultBody(props: ResultBodyProps) {
       </div>
       <div className="pb-10 md:mt-8">
         <FoldSection
-          number={5}
+          number={6}
           title="Provenance"
           context={
             isUnsaved || isLive
@@ -285,7 +295,7 @@ export function ResultBody(props: ResultBodyProps) {
           answer={`${steps} steps, unchanged since run ${run.number}`}
         >
           <Provenance collaboration={collaboration} run={run} />
-          <DigestList run={run} />
+          <ProvenanceDetails run={run} result={result} />
         </FoldSection>
       </div>
       <FootBar>

@@ -83,6 +83,7 @@ export function ResultConsole(props: ResultConsoleProps) {
 
   return (
     <Console
+      columns={5}
       foot={
         <>
           <ConsequenceSwitch

@@ -71,8 +71,9 @@ export function ResultScreen(props: ResultScreenProps) {
     void mutate();
   };
   const ended = newest?.job.status === 'failed' || newest?.job.status === 'cancelled';
-  const actions = (
+  const actions = (placement: 'head' | 'foot') => (
     <ResultActions
+      placement={placement}
       collaboration={collaboration}
       analysis={analysis}
       run={finished}
@@ -96,7 +97,7 @@ export function ResultScreen(props: ResultScreenProps) {
           { label: analysis.key },
         ]}
         state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
-        actions={actions}
+        actions={actions('head')}
       />
       <div className="grid gap-3 empty:hidden [&:not(:empty)]:mb-4">
         {isOnItsWay(newest) && (
@@ -141,7 +142,7 @@ export function ResultScreen(props: ResultScreenProps) {
           inRun={settingOfRun(run, definition) ?? inRecipe}
           setting={setting}
           isUnsaved={isUnsaved}
-          footActions={actions}
+          footActions={actions('foot')}
           onSetting={setMoved}
         />
       ) : (

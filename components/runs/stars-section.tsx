@@ -56,7 +56,7 @@ export function StarsSection(props: StarsSectionProps) {
 
   return (
     <FoldSection
-      number={4}
+      number={5}
       title="Which stars carry the limit"
       context="one dot a star"
       answer={`${half.stars} of ${stars.length} carry half of it`}

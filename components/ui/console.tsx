@@ -1,13 +1,25 @@
 import type { ReactNode } from 'react';
 
-/** The ground on which controls stand: six cells in a row, three by two, then one column. */
-export function Console({ children, foot }: { children: ReactNode; foot?: ReactNode }) {
+/** The ground on which controls stand: five or six cells in a row, three by two, then one column. */
+export function Console({
+  children,
+  foot,
+  columns = 6,
+}: {
+  children: ReactNode;
+  foot?: ReactNode;
+  columns?: 5 | 6;
+}) {
   return (
     <section
       className="rounded-plate bg-well px-[22px] py-3.5 max-md:-mx-[22px] max-md:rounded-none md:px-5 md:pt-4"
       aria-label="Assumptions"
     >
-      <div className="grid gap-y-3 md:grid-cols-3 xl:grid-cols-6">{children}</div>
+      <div
+        className={`grid gap-y-3 md:grid-cols-3 ${columns === 5 ? 'xl:grid-cols-5' : 'xl:grid-cols-6'}`}
+      >
+        {children}
+      </div>
       {foot !== undefined && (
         <div className="mt-2 flex flex-wrap items-end gap-x-[26px] gap-y-3 border-rule border-t pt-[13px]">
           {foot}
