@@ -2,10 +2,10 @@ import { spawn } from 'node:child_process';
 import { closeSync, existsSync, openSync, readFileSync, readlinkSync, rmSync } from 'node:fs';
 import path from 'node:path';
 import { saveConnection } from './cluster-files.mjs';
+import { endWithLauncher } from './death-signal.mjs';
 import { LauncherProblem } from './environment.mjs';
 import { findAnyPort, isPortFree } from './ports.mjs';
 import { isAlive, readProcess, run, wait, waitUntil } from './process-run.mjs';
-import { endWithLauncher } from './service-process.mjs';
 
 /** @typedef {import('./cluster-files.mjs').Cluster} Cluster */
 

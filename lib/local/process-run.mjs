@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process';
 import { readFileSync } from 'node:fs';
+import { endWithLauncher } from './death-signal.mjs';
 import { root } from './environment.mjs';
 
 /** @type {Set<import('node:child_process').ChildProcess>} */
@@ -15,15 +16,15 @@ export function endRunning() {
  *
  * @param {string} command
  * @param {string[]} args
- * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, input?: string, uid?: number, gid?: number,
- *   show?: boolean, signal?: AbortSignal }} [options] `show` passes the output on as it comes
+ * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, input?: string, uid?: number, gid?: number }} [options]
  * @returns {Promise<{ code: number, output: string, stdout: string }>} code is 127 when the program
  *   is missing and 128 when a signal ended it
  */
 export function run(command, args, options = {}) {
-  const { input, show, ...rest } = options;
+  const { input, ...rest } = options;
   return new Promise((resolve) => {
-    const child = spawn(command, args, { cwd: root, ...rest, stdio: ['pipe', 'pipe', 'pipe'] });
+    const [program, ...words] = endWithLauncher([command, ...args], 'TERM');
+    const child = spawn(program, words, { cwd: root, ...rest, stdio: ['pipe', 'pipe', 'pipe'] });
     running.add(child);
     let output = '';
     let stdout = '';
@@ -32,11 +33,9 @@ export function run(command, args, options = {}) {
     child.stdout.on('data', (chunk) => {
       output += chunk;
       stdout += chunk;
-      if (show) process.stdout.write(chunk);
     });
     child.stderr.on('data', (chunk) => {
       output += chunk;
-      if (show) process.stderr.write(chunk);
     });
     child.stdin.on('error', () => {});
     child.stdin.end(input ?? '');

@@ -18,6 +18,7 @@ import {
   MemberRow,
   PersonRow,
 } from '@/models';
+import { endWithLauncher } from './death-signal.mjs';
 import { askQuestions } from './demo/analyses';
 import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
 import { demoPeople, makePassword } from './demo/people';
@@ -132,14 +133,12 @@ async function importSurvey(
 }
 
 function startWorker(): ChildProcess {
-  return spawn(
-    process.execPath,
-    ['--enable-source-maps', path.resolve(config().bundleDirectory, 'workers/main.js')],
-    {
-      env: { ...process.env },
-      stdio: ['ignore', 'ignore', 'inherit'],
-    },
+  const script = path.resolve(config().bundleDirectory, 'workers/main.js');
+  const [command, ...args] = endWithLauncher(
+    [process.execPath, '--enable-source-maps', script],
+    'TERM',
   );
+  return spawn(command, args, { env: { ...process.env }, stdio: ['ignore', 'ignore', 'inherit'] });
 }
 
 async function writeSecret(name: string, text: string): Promise<void> {

@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process';
 import { closeSync, existsSync, openSync, readFileSync } from 'node:fs';
+import { endWithLauncher } from './death-signal.mjs';
 import { readProcess } from './process-run.mjs';
 
 /**
@@ -20,8 +21,6 @@ import { readProcess } from './process-run.mjs';
  * @property {number} [stopMs] how long it may take to end before it is killed
  */
 
-const setpriv = '/usr/bin/setpriv';
-
 /** Only the end of a log says why a process ended. */
 export function lastLines(/** @type {string} */ file, count = 15) {
   if (!existsSync(file)) return '';
@@ -30,14 +29,6 @@ export function lastLines(/** @type {string} */ file, count = 15) {
     .slice(-count)
     .map((line) => `    ${line}`)
     .join('\n');
-}
-
-/** The words of a command after which the kernel ends it when this process is killed. */
-export function endWithLauncher(
-  /** @type {string[]} */ words,
-  /** @type {'TERM' | 'INT'} */ signal,
-) {
-  return existsSync(setpriv) ? [setpriv, '--pdeathsig', signal, '--', ...words] : words;
 }
 
 /**
