@@ -7,7 +7,7 @@ const config = {
   agentRules: false,
   poweredByHeader: false,
   reactStrictMode: true,
-  serverExternalPackages: ['sequelize', 'graphile-worker', 'umzug'],
+  serverExternalPackages: ['sequelize', 'graphile-worker', 'umzug', 'piscina'],
 };
 
 export default config;
