@@ -10,8 +10,8 @@ export default function ErrorPage({
   reset(): void;
 }) {
   return (
-    <main id="main" className="mx-auto max-w-[640px] px-[22px] py-24">
-      <h1 className="font-light text-[34px]">This page could not be made</h1>
+    <main id="main" className="mx-auto max-w-[1440px] px-[22px] py-16 lg:px-10">
+      <h1 className="font-light text-[34px] leading-[1.12]">This page could not be made</h1>
       <p className="mt-3 text-ink2">
         Nothing was changed. The server&apos;s log has the reason
         {error.digest ? ` under ${error.digest}` : ''}.

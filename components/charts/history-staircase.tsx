@@ -35,9 +35,12 @@ const margin = { left: 44, right: 56, top: 48, bottom: 34 };
  */
 export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStaircaseProps) {
   const [measure, width] = useWidth<HTMLDivElement>(820);
+  const last = steps.at(-1);
+  const zeroText =
+    last?.limitWithZero === undefined ? '' : formatLimit(last.limitWithZero, quantity);
   const frame = {
     left: margin.left,
-    right: width - margin.right,
+    right: width - Math.max(margin.right, textWidth(zeroText, 13) + 12),
     top: margin.top,
     bottom: height - margin.bottom,
   };
@@ -49,7 +52,6 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
   const rates = linearTicks(0, 100 * peak, frame.bottom - frame.top, 60).filter(
     (tick) => tick.isMajor,
   );
-  const last = steps.at(-1);
   const hasZero = steps.some(({ limitWithZero }) => limitWithZero !== undefined);
   const labels = placeLabels(steps, x, y, frame.right, quantity);
 
@@ -81,7 +83,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
         x={frame.left}
         y0={frame.bottom}
         y1={frame.top}
-        gridTo={frame.right + 40}
+        gridTo={width - 16}
         hasLine={false}
       />
       <BottomAxis
@@ -93,7 +95,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
         scale={x}
         y={frame.bottom}
         x0={frame.left}
-        x1={frame.right + 40}
+        x1={width - 16}
       />
       {hasZero && last && (
         <>
@@ -103,7 +105,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
           />
           {last.limitWithZero !== undefined && (
             <text className="quiet" x={x(end) + 6} y={y(last.limitWithZero) + 4}>
-              {formatLimit(last.limitWithZero, quantity)}
+              {zeroText}
             </text>
           )}
           <text

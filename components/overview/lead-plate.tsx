@@ -1,8 +1,10 @@
 import Link from 'next/link';
 import { HistoryStaircase } from '@/components/charts/history-staircase';
+import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { Icon } from '@/components/ui/icon';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
-import { describePrior } from '@/lib/inference';
-import { formatRange, formatSignificant } from '@/lib/quantities/display';
+import { describeLevel, describePrior } from '@/lib/inference';
+import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { Overview } from '@/lib/schemas/overview';
 
@@ -13,12 +15,6 @@ const dateOf = (moment: string) =>
     year: 'numeric',
     timeZone: 'UTC',
   });
-
-function subjectOf(quantity: string | null): { unit: string; words: string } {
-  return quantity === 'companions_per_star'
-    ? { unit: '/100', words: 'stars: planets per 100 stars, of' }
-    : { unit: ' %', words: 'of stars host at least one planet of' };
-}
 
 /** The lead analysis as a sentence, and how its limit has moved. */
 export function LeadPlate({
@@ -33,8 +29,8 @@ export function LeadPlate({
   const run = lead.runs.find((one) => one.limit !== null);
   const { definition } = lead.population;
   if (!run || run.limit === null || run.quantity === null) return null;
-  const { unit, words } = subjectOf(run.quantity);
-  const level = `${formatSignificant(100 * run.credibleLevel, 3)} %`;
+  const isFraction = run.quantity === 'host_fraction';
+  const level = describeLevel(run.credibleLevel);
   const detections = run.detections ?? 0;
   return (
     <Plate>
@@ -43,21 +39,25 @@ export function LeadPlate({
           <p className="text-[14px] text-ink3">
             Lead analysis, {lead.key}, run {run.number} of {dateOf(run.finishedAt ?? run.createdAt)}
           </p>
-          <StatementNumber value={formatSignificant(100 * run.limit, 2)} unit={unit} />
-          <p className="font-light text-[22px] leading-[1.34] md:text-[27px]">
-            {words}{' '}
-            <b className="font-semibold">
-              {formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ')}
+          <StatementNumber
+            value={formatSignificant(100 * run.limit, 2)}
+            unit={isFraction ? `${THIN_SPACE}%` : undefined}
+          />
+          <p className="statement">
+            {isFraction ? 'of stars host at least one planet of' : 'planets of'}{' '}
+            <b>
+              <MassRange definition={definition} />
             </b>{' '}
             at{' '}
-            <b className="font-semibold">
-              {formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU')}
+            <b>
+              <AxisRange definition={definition} />
             </b>
+            {!isFraction && ' per 100 stars'}
           </p>
           <div className="mt-4">
             <Conditions
               rows={[
-                { name: 'Level', value: `${level} credible` },
+                { name: 'Level', value: `${level}, credible` },
                 { name: 'Prior', value: describePrior(lead.recipe.prior, run.quantity) },
                 {
                   name: 'Sample',
@@ -71,7 +71,10 @@ export function LeadPlate({
               className="font-semibold text-p-data"
               href={`/${collaboration}/analyses/${lead.key}`}
             >
-              Open {lead.key}
+              <span className="inline-flex items-center gap-1.5">
+                Open {lead.key}
+                <Icon name="forward" size={14} />
+              </span>
             </Link>
             {run.zeroLimit !== null && detections > 0 && (
               <Link

@@ -65,7 +65,7 @@ export function OverlapChart({ list }: { list: SurveyList }) {
                 cx={x(i)}
                 cy={y(row)}
                 r="5"
-                fill={rows.includes(row) ? 'var(--ink)' : 'none'}
+                fill={rows.includes(row) ? 'var(--ink)' : 'var(--page)'}
                 stroke={rows.includes(row) ? 'none' : 'var(--rule)'}
                 strokeWidth="1.4"
               />

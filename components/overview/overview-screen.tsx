@@ -106,7 +106,7 @@ export function OverviewScreen({
         }
       />
       {lead && (
-        <div className="mt-5">
+        <div className="mt-1">
           <LeadPlate collaboration={collaboration} overview={overview} lead={lead} />
         </div>
       )}

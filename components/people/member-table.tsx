@@ -90,8 +90,8 @@ export function MemberTable({
           <Row>
             <HeadCell>person</HeadCell>
             <HeadCell>role</HeadCell>
-            <HeadCell>leads</HeadCell>
-            <HeadCell>since</HeadCell>
+            <HeadCell className="max-md:hidden">leads</HeadCell>
+            <HeadCell className="max-md:hidden">since</HeadCell>
             <HeadCell>
               <span className="sr-only">change</span>
             </HeadCell>
@@ -102,11 +102,11 @@ export function MemberTable({
             <Row key={member.id}>
               <Cell>
                 <span className="font-semibold">{member.person.name}</span>
-                <span className="block text-[13px] text-ink3">{member.person.email}</span>
+                <span className="block break-all text-[13px] text-ink3">{member.person.email}</span>
               </Cell>
               <Cell>{member.roles.map((role) => roleWords[role]).join(', ')}</Cell>
-              <Cell>{member.leads.join(', ') || '–'}</Cell>
-              <Cell>{dateOf(member.joinedAt)}</Cell>
+              <Cell className="max-md:hidden">{member.leads.join(', ') || '–'}</Cell>
+              <Cell className="whitespace-nowrap max-md:hidden">{dateOf(member.joinedAt)}</Cell>
               <Cell>
                 {member.can.changeRoles && (
                   <TextAction onClick={() => setChosen(member)}>

@@ -11,7 +11,7 @@ function density(x: number, detections: number, exposure: number): number {
 const WIDTH = 800;
 const BASE = 560;
 const SCALE = 340;
-const HIGHEST_RATE = 0.12;
+const HIGHEST_RATE = 0.105;
 const samples = [38, 43, 48, 54, 60, 66, 73, 81, 90, 100, 112, 128];
 
 function pathOf(exposure: number, highest: number): string {
@@ -45,6 +45,7 @@ export function SampleGrowthArt() {
   const last = samples[samples.length - 1];
   const highest = density(2 / last, 2, last);
   const limit = (limitOf(last) / HIGHEST_RATE) * WIDTH;
+  const beyond = 1.18 * limitOf(last);
   const whole = pathOf(last, highest);
   return (
     <aside className="relative hidden flex-col justify-end bg-plate text-p-ink lg:flex">
@@ -83,7 +84,15 @@ export function SampleGrowthArt() {
             stroke="var(--p-ink3)"
           />
         ))}
-        <rect x={limit - 2} y={BASE - 330} width="4" height="330" fill="var(--p-bound)" />
+        <rect x={limit - 2.5} y={BASE - 330} width="5" height="330" fill="var(--p-bound)" />
+        <circle
+          cx={(beyond / HIGHEST_RATE) * WIDTH}
+          cy={BASE - (SCALE * density(beyond, 2, last)) / highest}
+          r="9"
+          fill="var(--p-ink)"
+          stroke="var(--plate)"
+          strokeWidth="5"
+        />
       </svg>
       <div className="px-14 pt-10 pb-16">
         <p className="font-light text-[24px] leading-tight">

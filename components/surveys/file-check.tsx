@@ -163,6 +163,30 @@ function Items({ report }: { report: UploadReport }) {
   );
 }
 
+/** A fault may name its line alone; the person knows whose line it is. */
+function LeaveOutField({
+  settings,
+  onSettings,
+}: Pick<FileCheckProps, 'onSettings'> & {
+  settings: UploadSettings;
+}) {
+  return (
+    <form
+      className="flex items-end gap-2"
+      onSubmit={(event) => {
+        event.preventDefault();
+        const target = String(new FormData(event.currentTarget).get('target')).trim();
+        if (target === '') return;
+        event.currentTarget.reset();
+        onSettings({ ...settings, leaveOut: [...(settings.leaveOut ?? []), target] });
+      }}
+    >
+      <TextField label="Leave a target out" name="target" placeholder="its name" maxLength={100} />
+      <Button type="submit">Leave out</Button>
+    </form>
+  );
+}
+
 interface FileCheckProps {
   entry: IncomingEntry;
   onSettings(settings: UploadSettings): void;
@@ -215,6 +239,9 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
       )}
       {canAct && (
         <div className="my-3 flex flex-wrap items-end gap-4">
+          {kind !== 'cooling-tables' && entry.state === 'refused' && (
+            <LeaveOutField settings={settings} onSettings={onSettings} />
+          )}
           {needsTarget && (
             <TextField
               label="The star of a file without a target column"

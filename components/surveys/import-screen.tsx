@@ -1,28 +1,39 @@
 'use client';
 
+import Link from 'next/link';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
+import { useCoolingTables, useSurvey } from '@/components/hooks/use-surveys';
 import { sendUpload, storeUpload } from '@/components/hooks/use-uploads';
 import { Button } from '@/components/ui/button';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { FileDrop } from '@/components/ui/file-drop';
-import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
+import { TextAction } from '@/components/ui/text-action';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import type { UploadKindName } from '@/lib/schemas/uploads';
 import { FileCheck } from './file-check';
 import { fileKinds } from './file-kinds';
+import { FileNeeds } from './file-needs';
 import type { IncomingEntry } from './incoming-entry';
+import { describeMapSettings } from './map-setting-words';
+import { MapSettingsDialog } from './map-settings-dialog';
 
 /** Three steps on one page: files, check, store. Storing is one transaction a file. */
 export function ImportScreen({
   collaboration,
-  survey,
+  survey: initial,
+  coolingName,
 }: {
   collaboration: string;
   survey: SurveyView;
+  /** Of the table with which curves become maps now. */
+  coolingName: string | null;
 }) {
+  const { data: survey = initial, mutate } = useSurvey(collaboration, initial.slug, initial);
+  const { data: tables, mutate: mutateTables } = useCoolingTables(collaboration);
+  const [dialog, setDialog] = useState<{ table?: string } | null>(null);
   const [kind, setKind] = useState<UploadKindName>(
     survey.targets === 0 ? 'targets' : 'contrast-curves',
   );
@@ -73,6 +84,7 @@ export function ImportScreen({
         state: 'stored',
         upload: await storeUpload(collaboration, entry.upload.id),
       });
+      await Promise.all([mutate(), mutateTables()]);
     } catch (reason) {
       change(entry.key, { state: 'read', failure: sentenceOf(reason) });
     }
@@ -83,6 +95,13 @@ export function ImportScreen({
   const storeAll = async () => {
     for (const entry of ready) await store(entry);
   };
+  const chosen = fileKinds.find((choice) => choice.kind === kind) ?? fileKinds[0];
+  const { cooling } = survey.mapSettings;
+  const tableName =
+    (cooling.kind === 'table' &&
+      tables?.find((table) => table.id === cooling.coolingTableId)?.name) ||
+    coolingName;
+  const storedTable = stored.filter((entry) => entry.kind === 'cooling-tables').at(-1);
   const needsTargets = survey.targets === 0 && kind !== 'targets' && kind !== 'cooling-tables';
   return (
     <div className="flex flex-col gap-10">
@@ -90,7 +109,7 @@ export function ImportScreen({
         <SectionOpener
           number={1}
           title="Files"
-          context="CSV, one kind a file; a unit may stand in brackets after a column's name"
+          context="one kind a file; a unit may stand in brackets after a column’s name"
         />
         <div className="mb-4">
           <ConsequenceSwitch<UploadKindName>
@@ -99,21 +118,29 @@ export function ImportScreen({
             onChange={setKind}
             options={fileKinds.map((choice) => ({ value: choice.kind, label: choice.label }))}
           />
-          <p className="mt-2 max-w-[72ch] text-[14px] text-ink3">
-            {fileKinds.find((choice) => choice.kind === kind)?.needs}
-          </p>
         </div>
-        {needsTargets && stored.length === 0 && (
-          <Notice tone="warn" title="This survey has no targets yet.">
-            Import the file of targets first: every other line is checked against their names.
-          </Notice>
-        )}
-        <FileDrop
-          label="Drop files here, or choose them"
-          hint="At most 512 MiB each"
-          maxBytes={512 * 2 ** 20}
-          onFiles={(files) => void take(files)}
-        />
+        <div className="grid gap-x-14 gap-y-6 lg:grid-cols-2">
+          <div className="flex min-w-0 flex-col gap-3">
+            {needsTargets && (
+              <Notice tone="warn" title="This survey has no targets yet.">
+                Import the file of targets first: every other line is checked against their names.
+              </Notice>
+            )}
+            <FileDrop
+              label={`Drop files of ${chosen.label} here, or choose them`}
+              hint="CSV, at most 512 MiB each"
+              maxBytes={512 * 2 ** 20}
+              onFiles={(files) => void take(files)}
+            />
+            {kind === 'contrast-curves' && (
+              <p className="text-ink2 text-note">
+                They become maps with {describeMapSettings(survey.mapSettings, tableName)}.{' '}
+                {survey.can.change && <TextAction onClick={() => setDialog({})}>Change</TextAction>}
+              </p>
+            )}
+          </div>
+          <FileNeeds kind={chosen} />
+        </div>
       </section>
       {entries.length > 0 && (
         <section>
@@ -144,9 +171,14 @@ export function ImportScreen({
               isAnnounced
               title={`${stored.length} ${stored.length === 1 ? 'file is' : 'files are'} stored.`}
               actions={
-                <LinkButton href={`/${collaboration}/surveys/${survey.slug}`}>
-                  Open {survey.name}
-                </LinkButton>
+                <>
+                  {storedTable && survey.can.change && (
+                    <TextAction onClick={() => setDialog({ table: titleOf(storedTable) })}>
+                      Use the table for {survey.name}
+                    </TextAction>
+                  )}
+                  <Link href={`/${collaboration}/surveys/${survey.slug}`}>Open {survey.name}</Link>
+                </>
               }
             >
               {stored.some((entry) => entry.kind === 'contrast-curves')
@@ -163,6 +195,20 @@ export function ImportScreen({
           )}
         </section>
       )}
+      <MapSettingsDialog
+        key={dialog?.table}
+        collaboration={collaboration}
+        survey={survey}
+        isOpen={dialog !== null}
+        proposedTable={dialog?.table}
+        onClose={() => setDialog(null)}
+        onSaved={() => void mutate()}
+      />
     </div>
   );
+}
+
+/** The name under which a cooling table was stored. */
+function titleOf({ settings, file }: IncomingEntry): string {
+  return settings.title ?? file.name.replace(/\.[^.]+$/, '');
 }

@@ -7,10 +7,10 @@ import { createSurvey, useCoolingTables } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { NumberField } from '@/components/ui/number-field';
-import { SelectField } from '@/components/ui/select-field';
+import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import { eccentricityChoices } from './map-setting-words';
+import { MapSettingsFields, readMapSettings } from './map-settings-fields';
 
 const yearOf = (value: FormDataEntryValue | null) => (value ? Number(value) : null);
 
@@ -23,7 +23,6 @@ export function SurveyForm({ collaboration }: { collaboration: string }) {
   const submit = async (form: FormData) => {
     setBusy(true);
     setRefusal(null);
-    const cooling = String(form.get('cooling'));
     try {
       const survey = await createSurvey(collaboration, {
         name: String(form.get('name')),
@@ -31,14 +30,7 @@ export function SurveyForm({ collaboration }: { collaboration: string }) {
         description: String(form.get('description')),
         observedFrom: yearOf(form.get('observedFrom')),
         observedTo: yearOf(form.get('observedTo')),
-        mapSettings: {
-          cooling:
-            cooling === 'built-in'
-              ? { kind: 'built-in' }
-              : { kind: 'table', coolingTableId: cooling },
-          eccentricity: eccentricityChoices[Number(form.get('eccentricity'))].law,
-          threshold: form.get('threshold') === 'hard' ? 'hard' : 'smooth',
-        },
+        mapSettings: readMapSettings(form),
       });
       router.push(`/${collaboration}/surveys/${survey.slug}/import`);
     } catch (reason) {
@@ -48,12 +40,15 @@ export function SurveyForm({ collaboration }: { collaboration: string }) {
   };
   return (
     <form
-      className="grid max-w-[760px] gap-4 md:grid-cols-2"
+      className="grid content-start gap-4 md:grid-cols-2"
       onSubmit={(event) => {
         event.preventDefault();
         void submit(new FormData(event.currentTarget));
       }}
     >
+      <div className="md:col-span-2">
+        <SectionOpener number={1} title="The survey" context="its name is how everybody cites it" />
+      </div>
       <TextField label="Name" name="name" required maxLength={60} />
       <TextField
         label="Band of the contrast curves"
@@ -67,35 +62,14 @@ export function SurveyForm({ collaboration }: { collaboration: string }) {
       <div className="md:col-span-2">
         <TextAreaField label="What it searched for" name="description" maxLength={2000} />
       </div>
-      <SelectField
-        label="Cooling relation, age and mass to magnitude"
-        name="cooling"
-        key={tables.length}
-        defaultValue={tables[0]?.id ?? 'built-in'}
-        options={[
-          ...tables.map((table) => ({
-            value: table.id,
-            label: `${table.name} (${table.bands.join(', ')})`,
-          })),
-          { value: 'built-in', label: 'Approximate cooling law, built in' },
-        ]}
-      />
-      <SelectField
-        label="Eccentricities"
-        name="eccentricity"
-        options={eccentricityChoices.map((choice, i) => ({
-          value: String(i),
-          label: choice.words,
-        }))}
-      />
-      <SelectField
-        label="Detection at the threshold"
-        name="threshold"
-        options={[
-          { value: 'smooth', label: 'smooth, half at the contrast limit' },
-          { value: 'hard', label: 'hard, all or nothing at the contrast limit' },
-        ]}
-      />
+      <div className="mt-4 md:col-span-2">
+        <SectionOpener
+          number={2}
+          title="From curves to maps"
+          context="can be changed later; the maps are then computed anew"
+        />
+      </div>
+      <MapSettingsFields tables={tables} />
       <div className="flex flex-col gap-3 md:col-span-2">
         {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
         <div>

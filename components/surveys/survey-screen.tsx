@@ -1,6 +1,7 @@
 'use client';
 
-import { useState } from 'react';
+import { useRouter } from 'next/navigation';
+import { useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
@@ -10,11 +11,14 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { Tabs } from '@/components/ui/tabs';
+import { TextAction } from '@/components/ui/text-action';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
 import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
 import type { UploadView } from '@/lib/schemas/uploads';
 import { CompanionTable } from './companion-table';
 import { MapJobLine } from './map-job-line';
 import { describeMapSettings } from './map-setting-words';
+import { MapSettingsDialog } from './map-settings-dialog';
 import { observedYears } from './survey-table';
 import { TargetPanel } from './target-panel';
 import { TargetTable } from './target-table';
@@ -27,6 +31,8 @@ interface SurveyScreenProps {
   companions: CompanionView[];
   uploads: UploadView[];
   coolingName: string | null;
+  /** The newest shared population: detection probabilities are averages over it. */
+  population: PopulationDefinition | null;
 }
 
 function factsOf(survey: SurveyView): Fact[] {
@@ -45,9 +51,15 @@ function factsOf(survey: SurveyView): Fact[] {
   ];
 }
 
+const hasYears = (survey: SurveyView) => survey.observedFrom !== null || survey.observedTo !== null;
+
+/** A description as part of a sentence: without its full stop, its first word in lower case. */
+const asClause = (text: string) =>
+  text.replace(/\.$/, '').replace(/^[A-Z](?=[a-z])/, (letter) => letter.toLowerCase());
+
 /** One survey: what it holds, what is on its way, and each target with its curve and map. */
 export function SurveyScreen(props: SurveyScreenProps) {
-  const { collaboration, uploads, coolingName } = props;
+  const { collaboration, uploads, coolingName, population } = props;
   const { data: survey = props.survey, mutate } = useSurvey(
     collaboration,
     props.survey.slug,
@@ -67,8 +79,18 @@ export function SurveyScreen(props: SurveyScreenProps) {
   );
   const [selectedId, setSelectedId] = useState<string | null>(null);
   const [refusal, setRefusal] = useState<string | null>(null);
+  const [isSetting, setSetting] = useState(false);
+  const panel = useRef<HTMLDivElement>(null);
   const selected =
     list.targets.find((target) => target.id === selectedId) ?? list.targets[0] ?? null;
+  const router = useRouter();
+  const select = (id: string) => {
+    setSelectedId(id);
+    // Below the two columns the star's charts lie under a long table: take the reader there.
+    const { current } = panel;
+    if (current && current.getBoundingClientRect().top > window.innerHeight)
+      current.scrollIntoView({ block: 'start' });
+  };
   const importHref = `/${collaboration}/surveys/${survey.slug}/import`;
   const compute = async () => {
     setRefusal(null);
@@ -85,7 +107,21 @@ export function SurveyScreen(props: SurveyScreenProps) {
       <PageTitle
         title={survey.name}
         crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: survey.name }]}
-        context={`${survey.band} band, observed ${observedYears(survey)}; lead ${survey.lead?.name ?? 'nobody'}. Maps: ${describeMapSettings(survey.mapSettings, coolingName)}`}
+        context={
+          <>
+            <i>{survey.band}</i> band{survey.description && `, ${asClause(survey.description)}`}
+            {hasYears(survey) && `, observed ${observedYears(survey)}`}; lead{' '}
+            {survey.lead?.name ?? 'nobody'}
+            <span className="block text-ink3 text-note">
+              Maps: {describeMapSettings(survey.mapSettings, coolingName)}{' '}
+              {survey.can.change && (
+                <TextAction className="ml-1" onClick={() => setSetting(true)}>
+                  Change<span className="sr-only"> how the maps are made</span>
+                </TextAction>
+              )}
+            </span>
+          </>
+        }
         actions={
           survey.can.import && (
             <>
@@ -100,6 +136,16 @@ export function SurveyScreen(props: SurveyScreenProps) {
         }
       />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      <MapSettingsDialog
+        collaboration={collaboration}
+        survey={survey}
+        isOpen={isSetting}
+        onClose={() => setSetting(false)}
+        onSaved={() => {
+          void mutate();
+          router.refresh();
+        }}
+      />
       {survey.targets === 0 ? (
         <div className="mt-8">
           <EmptyState
@@ -124,7 +170,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
             survey={survey}
             onChanged={() => void mutate()}
           />
-          <div className="mt-5 grid gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,2fr)_minmax(0,1fr)]">
+          <div className="mt-5 grid gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,1fr)_minmax(340px,390px)]">
             <Tabs
               label="Parts of the survey"
               tabs={[
@@ -136,7 +182,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
                     <TargetTable
                       targets={list.targets}
                       selectedId={selected?.id ?? null}
-                      onSelect={setSelectedId}
+                      onSelect={select}
                     />
                   ),
                 },
@@ -173,15 +219,18 @@ export function SurveyScreen(props: SurveyScreenProps) {
               ]}
             />
             {selected && (
-              <TargetPanel
-                key={selected.id}
-                collaboration={collaboration}
-                survey={survey}
-                targets={list.targets}
-                companions={companions}
-                target={selected}
-                onChanged={() => void mutateTargets()}
-              />
+              <div ref={panel} className="min-w-0 scroll-mt-4">
+                <TargetPanel
+                  key={selected.id}
+                  collaboration={collaboration}
+                  survey={survey}
+                  targets={list.targets}
+                  companions={companions}
+                  target={selected}
+                  population={population}
+                  onChanged={() => void mutateTargets()}
+                />
+              </div>
             )}
           </div>
         </>

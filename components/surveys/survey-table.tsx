@@ -25,6 +25,9 @@ function MapsState({ survey }: { survey: SurveyView }) {
   return <StateMark kind="waiting">{count}</StateMark>;
 }
 
+/** Columns that a narrow screen leaves to the survey's own page. */
+const wide = 'max-md:hidden';
+
 function SurveyRow({
   collaboration,
   survey,
@@ -49,15 +52,17 @@ function SurveyRow({
           {survey.isArchived && <span className="font-normal text-ink3">archived</span>}
         </span>
       </Cell>
-      <Cell>{survey.band}</Cell>
-      <Cell className="whitespace-nowrap">{observedYears(survey)}</Cell>
-      <Cell className="whitespace-nowrap">{survey.lead?.name ?? '–'}</Cell>
+      <Cell className={wide}>{survey.band}</Cell>
+      <Cell className={`whitespace-nowrap ${wide}`}>{observedYears(survey)}</Cell>
+      <Cell className={`whitespace-nowrap ${wide}`}>{survey.lead?.name ?? '–'}</Cell>
       <Cell isNumeric>{survey.targets}</Cell>
-      <Cell isNumeric>{survey.alsoInAnother}</Cell>
-      <Cell>
+      <Cell isNumeric className={wide}>
+        {survey.alsoInAnother}
+      </Cell>
+      <Cell className="whitespace-nowrap">
         <MapsState survey={survey} />
       </Cell>
-      <Cell>
+      <Cell className={wide}>
         {survey.summedCompleteness === null ? (
           '–'
         ) : (
@@ -69,7 +74,7 @@ function SurveyRow({
         )}
       </Cell>
       <Cell isNumeric>{survey.summedCompleteness?.toFixed(1) ?? '–'}</Cell>
-      <Cell>
+      <Cell className={wide}>
         {survey.depth && (
           <Sparkline
             xs={Float64Array.from(survey.depth.semiMajorAxisAu)}
@@ -101,14 +106,21 @@ export function SurveyTable({ collaboration, list }: SurveyTableProps) {
       <TableHead>
         <Row>
           <HeadCell>survey</HeadCell>
-          <HeadCell>band</HeadCell>
-          <HeadCell>observed</HeadCell>
-          <HeadCell>lead</HeadCell>
+          <HeadCell className={wide}>band</HeadCell>
+          <HeadCell className={wide}>observed</HeadCell>
+          <HeadCell className={wide}>lead</HeadCell>
           <HeadCell isNumeric>targets</HeadCell>
-          <HeadCell isNumeric>also in another</HeadCell>
+          <HeadCell isNumeric className={wide}>
+            also in another
+          </HeadCell>
           <HeadCell>maps ready</HeadCell>
-          <HeadCell colSpan={2}>sum of detection probabilities</HeadCell>
-          <HeadCell>1–1000 AU</HeadCell>
+          <HeadCell colSpan={2} className={wide}>
+            sum of detection probabilities
+          </HeadCell>
+          <HeadCell isNumeric className="md:hidden">
+            sum
+          </HeadCell>
+          <HeadCell className={wide}>1–1000 AU</HeadCell>
         </Row>
       </TableHead>
       <TableBody>
@@ -116,18 +128,22 @@ export function SurveyTable({ collaboration, list }: SurveyTableProps) {
           <SurveyRow key={survey.id} collaboration={collaboration} survey={survey} most={most} />
         ))}
         <Row isTotal>
-          <Cell isRowHead>Combined, every star once</Cell>
-          <Cell />
-          <Cell />
-          <Cell />
+          <Cell isRowHead className="whitespace-nowrap">
+            Every star once
+          </Cell>
+          <Cell className={wide} />
+          <Cell className={wide} />
+          <Cell className={wide} />
           <Cell isNumeric>{list.stars}</Cell>
-          <Cell isNumeric>{shared}</Cell>
-          <Cell>
+          <Cell isNumeric className={wide}>
+            {shared}
+          </Cell>
+          <Cell className="whitespace-nowrap">
             {ready} of {list.entries}
           </Cell>
+          <Cell className={wide} />
           <Cell />
-          <Cell />
-          <Cell />
+          <Cell className={wide} />
         </Row>
       </TableBody>
     </Table>

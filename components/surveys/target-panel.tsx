@@ -6,12 +6,14 @@ import { ContrastChart } from '@/components/charts/contrast-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { leaveTargetOut, useMap } from '@/components/hooks/use-surveys';
+import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
 import type { CompanionView, SurveyView, TargetView } from '@/lib/schemas/surveys';
 import { formatErrorPart, formatMeasured } from './measured';
 
@@ -21,6 +23,8 @@ interface TargetPanelProps {
   targets: TargetView[];
   companions: CompanionView[];
   target: TargetView;
+  /** Whose ranges are drawn on the map; null without a shared population. */
+  population: PopulationDefinition | null;
   onChanged(): void;
 }
 
@@ -102,7 +106,7 @@ function LeaveOut({
 
 /** The chosen target: its curves among those of the survey, and its completeness map. */
 export function TargetPanel(props: TargetPanelProps) {
-  const { collaboration, survey, targets, companions, target, onChanged } = props;
+  const { collaboration, survey, targets, companions, target, population, onChanged } = props;
   const { data: stored, error } = useMap(collaboration, target.mapId);
   const curves = useMemo(
     () =>
@@ -152,7 +156,7 @@ export function TargetPanel(props: TargetPanelProps) {
     <div className="flex min-w-0 flex-col gap-8">
       <div className="bg-act-soft px-4 py-3">
         <div className="flex flex-wrap items-baseline justify-between gap-x-4">
-          <h2 className="font-semibold text-[17px]">{target.name}</h2>
+          <h2 className="text-[17px]">{target.name}</h2>
           {target.probability !== null && (
             <span className="text-[14px]">
               detection probability <b>{Math.round(100 * target.probability)} %</b>
@@ -196,8 +200,16 @@ export function TargetPanel(props: TargetPanelProps) {
               map={map}
               subject={`detection probability of ${target.name}`}
               detections={own}
+              range={population ?? undefined}
             />
             <RampKey label="detection probability" />
+            {population && target.probability !== null && (
+              <p className="mt-1 text-ink3 text-note">
+                Its mean over <MassRange definition={population} /> at{' '}
+                <AxisRange definition={population} /> with <PowerLaws definition={population} /> is{' '}
+                {Math.round(100 * target.probability)} %.
+              </p>
+            )}
           </>
         ) : (
           <p className="py-3 text-ink3">

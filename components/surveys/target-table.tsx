@@ -14,6 +14,9 @@ import { formatErrorPart, formatMeasured } from './measured';
 
 const PAGE = 21;
 
+/** Columns that a narrow screen leaves to the panel of the chosen star. */
+const wide = 'max-md:hidden';
+
 function MapMark({ target }: { target: TargetView }) {
   if (target.leftOutReason !== null) return <StateMark kind="stopped">left out</StateMark>;
   if (target.mapState === 'failed')
@@ -49,9 +52,12 @@ function TargetLine({
         >
           {target.name}
         </button>
+        <span className="block font-normal text-chart text-ink3 md:hidden">
+          {[target.spectralType, target.movingGroup ?? 'field'].filter(Boolean).join(', ')}
+        </span>
       </Cell>
-      <Cell>{target.spectralType ?? '–'}</Cell>
-      <Cell isNumeric>
+      <Cell className={wide}>{target.spectralType ?? '–'}</Cell>
+      <Cell isNumeric className={wide}>
         {target.distancePc === null
           ? '–'
           : formatMeasured(target.distancePc, target.distanceErrorPc)}
@@ -59,7 +65,7 @@ function TargetLine({
           <ErrorTerm>{formatErrorPart(target.distanceErrorPc)}</ErrorTerm>
         )}
       </Cell>
-      <Cell isNumeric>
+      <Cell isNumeric className={wide}>
         {target.ageMyr === null ? '–' : formatMeasured(target.ageMyr, null)}
         {target.ageMyr !== null && (
           <ErrorTerm>
@@ -69,10 +75,11 @@ function TargetLine({
           </ErrorTerm>
         )}
       </Cell>
-      <Cell className="whitespace-nowrap">{target.movingGroup ?? 'field'}</Cell>
-      <Cell>
+      <Cell className={`whitespace-nowrap ${wide}`}>{target.movingGroup ?? 'field'}</Cell>
+      <Cell className={wide}>
         {curve && (
           <Sparkline
+            width={68}
             xs={Float64Array.from(curve.separationArcsec)}
             ys={Float64Array.from(curve.contrastMag)}
             isLogX
@@ -82,13 +89,13 @@ function TargetLine({
         )}
       </Cell>
       <Cell>
-        {target.probability !== null && <ProbabilityBar value={target.probability} width={60} />}
+        {target.probability !== null && <ProbabilityBar value={target.probability} width={52} />}
       </Cell>
       <Cell isNumeric>
         {target.probability === null ? '–' : `${Math.round(100 * target.probability)} %`}
       </Cell>
-      <Cell>
-        <span className="flex flex-wrap gap-x-3">
+      <Cell className={wide}>
+        <span className="flex gap-x-2">
           {target.alsoIn.length === 0 && '–'}
           {target.alsoIn.map((survey) => (
             <span
@@ -145,7 +152,7 @@ export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps)
   };
   return (
     <div>
-      <div className="mb-2 flex flex-wrap items-end gap-x-4 gap-y-2">
+      <div className="mb-2 flex flex-wrap items-end gap-x-3 gap-y-2 max-md:[&>div]:w-full">
         <TextField
           label="Find a star, group or type"
           isLabelHidden
@@ -182,13 +189,20 @@ export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps)
         <TableHead>
           <Row>
             <HeadCell>star</HeadCell>
-            <HeadCell>type</HeadCell>
-            <HeadCell isNumeric>distance, pc</HeadCell>
-            <HeadCell isNumeric>age, Myr</HeadCell>
-            <HeadCell>group</HeadCell>
-            <HeadCell>curve</HeadCell>
-            <HeadCell colSpan={2}>detection probability</HeadCell>
-            <HeadCell>also in</HeadCell>
+            <HeadCell className={wide}>type</HeadCell>
+            <HeadCell isNumeric className={wide}>
+              distance, pc
+            </HeadCell>
+            <HeadCell isNumeric className={wide}>
+              age, Myr
+            </HeadCell>
+            <HeadCell className={wide}>group</HeadCell>
+            <HeadCell className={wide}>curve</HeadCell>
+            <HeadCell colSpan={2}>
+              <span className="max-md:hidden">detection probability</span>
+              <span className="md:hidden">seen</span>
+            </HeadCell>
+            <HeadCell className={wide}>also in</HeadCell>
             <HeadCell>check</HeadCell>
           </Row>
         </TableHead>

@@ -31,7 +31,7 @@ export function StateMark({ kind, children }: { kind: StateKind; children: React
   const { icon, colour, isStrong } = states[kind];
   return (
     <span
-      className={`inline-flex items-center gap-1.5 text-note ${colour} ${isStrong ? 'font-semibold' : ''}`}
+      className={`inline-flex items-center gap-1.5 align-middle text-note ${colour} ${isStrong ? 'font-semibold' : ''}`}
     >
       <Icon name={icon} size={14} />
       <span>{children}</span>

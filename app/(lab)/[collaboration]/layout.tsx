@@ -23,7 +23,7 @@ export default async function LabLayout({
     <>
       <SkipLink />
       <LabBar me={await getMe(person)} current={actor.collaboration} theme={theme} />
-      <main id="main" className="mx-auto max-w-[1440px] px-[22px] pt-6 lg:px-10">
+      <main id="main" className="mx-auto max-w-[1440px] px-[22px] lg:px-10">
         {children}
       </main>
       <LabFoot collaboration={actor.collaboration} />

@@ -2,7 +2,7 @@ import type { Metadata } from 'next';
 import { cookies } from 'next/headers';
 import { redirect } from 'next/navigation';
 import { currentPerson } from '@/app/session';
-import { Entrance } from '@/components/people/entrance';
+import { Entrance, EntranceTitle } from '@/components/people/entrance';
 import { SignInForm } from '@/components/people/sign-in-form';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
 
@@ -22,9 +22,7 @@ export default async function SignInPage({
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
     <Entrance theme={theme}>
-      <h1 className="font-light text-[34px] leading-[1.12] tracking-[-0.012em]">
-        Limits that say what they rest on
-      </h1>
+      <EntranceTitle>Limits that say what they rest on</EntranceTitle>
       <p className="mt-3 mb-6 text-[15px] text-ink3">
         Occurrence rates from direct-imaging surveys, star by star, with every age, curve and prior
         on record.

@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import { cookies } from 'next/headers';
-import { Entrance } from '@/components/people/entrance';
+import { Entrance, EntranceTitle } from '@/components/people/entrance';
 import { SignUpForm } from '@/components/people/sign-up-form';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
 
@@ -10,7 +10,7 @@ export default async function SignUpPage() {
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
     <Entrance theme={theme}>
-      <h1 className="font-light text-[34px] leading-[1.12] tracking-[-0.012em]">Make an account</h1>
+      <EntranceTitle>Make an account</EntranceTitle>
       <p className="mt-3 mb-6 text-[15px] text-ink3">
         Then start a collaboration of your own, or join one that invites you.
       </p>

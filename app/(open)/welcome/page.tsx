@@ -1,7 +1,7 @@
 import type { Metadata } from 'next';
 import { cookies } from 'next/headers';
 import { requirePerson } from '@/app/session';
-import { Entrance } from '@/components/people/entrance';
+import { Entrance, EntranceTitle } from '@/components/people/entrance';
 import { WelcomeForm } from '@/components/people/welcome-form';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
 
@@ -12,9 +12,7 @@ export default async function WelcomePage() {
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
     <Entrance theme={theme}>
-      <h1 className="font-light text-[34px] leading-[1.12] tracking-[-0.012em]">
-        Start a collaboration
-      </h1>
+      <EntranceTitle>Start a collaboration</EntranceTitle>
       <p className="mt-3 mb-6 text-[15px] text-ink3">
         {person.personName}, you become its owner: you invite the others and say what each may do.
         What is in it is visible to its members only.

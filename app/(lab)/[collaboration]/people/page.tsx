@@ -30,13 +30,13 @@ export default async function PeoplePage({
         title="People"
         context={`${members.length} in this collaboration; nobody else sees what is in it`}
       />
-      <div className="mt-8 grid gap-x-14 gap-y-10 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
-        <section>
+      <div className="mt-2 grid gap-x-14 gap-y-10 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
+        <section className="min-w-0">
           <SectionOpener title="Members" context="a person may hold several roles" />
           <MemberTable collaboration={actor.collaboration} initial={members} />
         </section>
         {offered.length > 0 && (
-          <section>
+          <section className="min-w-0">
             <SectionOpener title="Invite" context="valid 14 days, once" />
             <InvitationPanel
               collaboration={actor.collaboration}

@@ -29,7 +29,7 @@ export default async function SurveysPage({
           )
         }
       />
-      <div className="mt-6">
+      <div className="mt-2">
         <SurveyListPanel collaboration={actor.collaboration} initial={list} canAdd={canAdd} />
       </div>
     </>

@@ -1,7 +1,7 @@
 import type { Metadata } from 'next';
 import { cookies } from 'next/headers';
 import { currentPerson } from '@/app/session';
-import { Entrance } from '@/components/people/entrance';
+import { Entrance, EntranceTitle } from '@/components/people/entrance';
 import { JoinForm } from '@/components/people/join-form';
 import { LinkButton } from '@/components/ui/link-button';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
@@ -27,9 +27,7 @@ export default async function JoinPage({ params }: { params: Promise<{ code: str
     <Entrance theme={theme}>
       {offer === null ? (
         <>
-          <h1 className="font-light text-[34px] leading-[1.12] tracking-[-0.012em]">
-            This invitation is not open
-          </h1>
+          <EntranceTitle>This invitation is not open</EntranceTitle>
           <p className="mt-3 mb-6 text-[15px] text-ink3">
             It was used, taken back, or is older than 14 days. Ask whoever invited you for a new
             one.
@@ -38,9 +36,7 @@ export default async function JoinPage({ params }: { params: Promise<{ code: str
         </>
       ) : (
         <>
-          <h1 className="font-light text-[34px] leading-[1.12] tracking-[-0.012em]">
-            Join {offer.collaboration}
-          </h1>
+          <EntranceTitle>Join {offer.collaboration}</EntranceTitle>
           <p className="mt-3 mb-6 text-[15px] text-ink3">
             {offer.invitedBy ?? 'An owner'} invites {offer.email} as {offer.roles.join(' and ')}.
           </p>

@@ -2,6 +2,7 @@ import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
 import { TokenPanel } from '@/components/people/token-panel';
 import { PageTitle } from '@/components/ui/page-title';
+import { config } from '@/lib/config';
 import { listTokens } from '@/lib/services/tokens';
 
 export const metadata: Metadata = { title: 'API tokens' };
@@ -19,8 +20,12 @@ export default async function TokensPage({
         title="API tokens"
         context="For scripts: a token reaches this collaboration only, and never does more than you may"
       />
-      <div className="mt-8">
-        <TokenPanel collaboration={actor.collaboration} initial={tokens} />
+      <div className="mt-2">
+        <TokenPanel
+          collaboration={actor.collaboration}
+          address={config().webAddress}
+          initial={tokens}
+        />
       </div>
     </>
   );

@@ -3,7 +3,8 @@ import { notFound } from 'next/navigation';
 import { currentActor } from '@/app/session';
 import { SurveyScreen } from '@/components/surveys/survey-screen';
 import { NotFound } from '@/lib/errors';
-import { listCoolingTables } from '@/lib/services/cooling-tables';
+import { nameCooling } from '@/lib/services/cooling-tables';
+import { currentYardstick } from '@/lib/services/survey-depth';
 import { getSurvey } from '@/lib/services/surveys';
 import { listCompanions, listTargets } from '@/lib/services/targets';
 import { listUploads } from '@/lib/services/uploads';
@@ -20,18 +21,13 @@ export default async function SurveyPage({
   const { collaboration, survey: slug } = await params;
   const actor = await currentActor(collaboration);
   try {
-    const [survey, targets, companions, uploads, tables] = await Promise.all([
+    const [survey, targets, companions, uploads, yardstick] = await Promise.all([
       getSurvey(actor, slug),
       listTargets(actor, slug, FIRST_PAGE),
       listCompanions(actor, slug),
       listUploads(actor, slug, { limit: 50, offset: 0 }),
-      listCoolingTables(actor),
+      currentYardstick(actor.collaborationId),
     ]);
-    const { cooling } = survey.mapSettings;
-    const coolingName =
-      cooling.kind === 'table'
-        ? (tables.find((table) => table.id === cooling.coolingTableId)?.name ?? null)
-        : null;
     return (
       <SurveyScreen
         collaboration={actor.collaboration}
@@ -39,7 +35,8 @@ export default async function SurveyPage({
         targets={targets}
         companions={companions}
         uploads={uploads}
-        coolingName={coolingName}
+        coolingName={await nameCooling(actor, survey)}
+        population={yardstick.isShared ? yardstick.population : null}
       />
     );
   } catch (error) {

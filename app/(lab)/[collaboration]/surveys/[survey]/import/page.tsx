@@ -5,6 +5,7 @@ import { ImportScreen } from '@/components/surveys/import-screen';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { NotFound } from '@/lib/errors';
+import { nameCooling } from '@/lib/services/cooling-tables';
 import { getSurvey } from '@/lib/services/surveys';
 
 export const metadata: Metadata = { title: 'Import' };
@@ -24,7 +25,7 @@ export default async function ImportPage({
   return (
     <>
       <PageTitle
-        title="Import"
+        title={`Import into ${survey.name}`}
         crumbs={[
           { href: base, label: 'Surveys' },
           { href: `${base}/${survey.slug}`, label: survey.name },
@@ -32,9 +33,13 @@ export default async function ImportPage({
         ]}
         context="Files are read line by line and shown; nothing is stored before you say so"
       />
-      <div className="mt-6">
+      <div className="mt-2">
         {survey.can.import ? (
-          <ImportScreen collaboration={actor.collaboration} survey={survey} />
+          <ImportScreen
+            collaboration={actor.collaboration}
+            survey={survey}
+            coolingName={await nameCooling(actor, survey)}
+          />
         ) : (
           <Notice
             tone="neutral"
