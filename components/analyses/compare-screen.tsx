@@ -2,28 +2,18 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { percentBelow } from '@/components/runs/level-table';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
-import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
-import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import { TextAction } from '@/components/ui/text-action';
-import { describeLevel } from '@/lib/inference';
-import { formatLimit, formatSignificant } from '@/lib/quantities/display';
 import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
 import type { PopulationView } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
-import {
-  type ComparedInput,
-  type ComparedRun,
-  compareInputs,
-  pairLevels,
-} from './compare-differences';
+import { type ComparedInput, type ComparedRun, compareInputs } from './compare-differences';
 import { ComparePlate } from './compare-plate';
+import { ByLevel, ComparisonInWords, Differences } from './compare-sections';
 import { compareSentences } from './compare-words';
 import { inWords } from './name-words';
 
@@ -144,7 +134,7 @@ function Comparison({
       <div className="mt-8 grid gap-x-14 gap-y-8 pb-10 xl:grid-cols-[1fr_360px]">
         <div className="grid min-w-0 content-start gap-8">
           <Differences inputs={inputs} differing={differing} />
-          <InWords text={words} />
+          <ComparisonInWords text={words} />
         </div>
         <ByLevel a={a} b={b} />
       </div>
@@ -164,107 +154,6 @@ function alignQuery(a: ComparedRun, rows: ComparedInput[]): string {
     if (name === 'Level') parts.level = String(result.credibleLevel);
   }
   return new URLSearchParams(parts).toString();
-}
-
-function Differences({
-  inputs,
-  differing,
-}: {
-  inputs: ComparedInput[];
-  differing: ComparedInput[];
-}) {
-  const same = inputs.filter((row) => row.a === row.b).map(({ name }) => name.toLowerCase());
-  return (
-    <section className="min-w-0">
-      <SectionOpener
-        number={1}
-        title="What differs"
-        context={`${differing.length} of ${inputs.length} inputs`}
-      />
-      {differing.length > 0 && (
-        <Table caption="Inputs that differ">
-          <TableHead>
-            <tr>
-              <HeadCell>input</HeadCell>
-              <HeadCell>A</HeadCell>
-              <HeadCell>B</HeadCell>
-            </tr>
-          </TableHead>
-          <TableBody>
-            {differing.map((row) => (
-              <Row key={row.name}>
-                <Cell>{row.name}</Cell>
-                <Cell className="font-semibold">{row.a}</Cell>
-                <Cell className="font-semibold">{row.b}</Cell>
-              </Row>
-            ))}
-          </TableBody>
-        </Table>
-      )}
-      <p className="mt-2.5 text-ink3 text-note">
-        <b className="text-ink2">Same in both</b> {same.join(', ')}
-      </p>
-    </section>
-  );
-}
-
-function ByLevel({ a, b }: { a: ComparedRun; b: ComparedRun }) {
-  const chosen = (level: number) => Math.abs(level - a.result.credibleLevel) < 1e-9;
-  return (
-    <section className="min-w-0">
-      <SectionOpener number={2} title="By credible level" />
-      <Table caption="Upper limits of both by credible level, with their ratio">
-        <TableHead>
-          <tr>
-            <HeadCell>level</HeadCell>
-            <HeadCell isNumeric>A, %</HeadCell>
-            <HeadCell isNumeric>B, %</HeadCell>
-            <HeadCell isNumeric>A over B</HeadCell>
-          </tr>
-        </TableHead>
-        <TableBody>
-          {pairLevels(a, b).map((row) => (
-            <Row key={row.level} isSelected={chosen(row.level)}>
-              <Cell isRowHead>{describeLevel(row.level)}</Cell>
-              <Cell isNumeric className={chosen(row.level) ? 'limit' : ''}>
-                {percentBelow(row.a)}
-              </Cell>
-              <Cell isNumeric className={chosen(row.level) ? 'limit' : ''}>
-                {percentBelow(row.b)}
-              </Cell>
-              <Cell isNumeric>{row.b > 0 ? formatSignificant(row.a / row.b, 2) : '–'}</Cell>
-            </Row>
-          ))}
-        </TableBody>
-      </Table>
-      <p className="mt-2 text-chart text-ink3">
-        A: {formatLimit(a.result.answer.limit, a.result.quantity)} at{' '}
-        {describeLevel(a.result.credibleLevel)}; B:{' '}
-        {formatLimit(b.result.answer.limit, b.result.quantity)} at{' '}
-        {describeLevel(b.result.credibleLevel)}.
-      </p>
-    </section>
-  );
-}
-
-function InWords({ text }: { text: string }) {
-  const [isCopied, setCopied] = useState(false);
-  return (
-    <section>
-      <SectionOpener number={3} title="In words" context="for a reply or a footnote" />
-      <p className="text-body">{text}</p>
-      <TextAction
-        icon="copy"
-        className="mt-2 font-semibold"
-        onClick={async () => {
-          await navigator.clipboard.writeText(text);
-          setCopied(true);
-        }}
-      >
-        <span aria-live="polite">{isCopied ? 'Copied' : 'Copy as text'}</span>
-      </TextAction>
-    </section>
-  );
 }
 
 function ChooseTwo({ collaboration, choices, sides }: CompareScreenProps) {

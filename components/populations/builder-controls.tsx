@@ -9,7 +9,7 @@ import { TraceSlider } from '@/components/charts/trace-slider';
 import type { Trace } from '@/components/runs/consequences';
 import { EditableRange } from '@/components/runs/editable-range';
 import { tidy } from '@/components/runs/live-setting';
-import { TRACK, trackOf } from '@/components/runs/use-live-result';
+import { TRACK, trackOf } from '@/components/runs/tracks';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent } from '@/lib/quantities/display';
@@ -25,7 +25,7 @@ interface BuilderControlsProps {
   /** Where the orbits come from: said, not chosen here. */
   orbits: string;
   profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
-  /** Limits against each index, per natural logarithm; undefined without maps. */
+  /** Limits against each linear index; undefined without maps. */
   traces?: { massIndex?: Trace; semiMajorAxisIndex?: Trace };
   /** `isSettled` is false while something is being dragged. */
   onSetting(setting: BuilderSetting, isSettled: boolean): void;
@@ -59,9 +59,7 @@ export function BuilderControls(props: BuilderControlsProps) {
         }
         trace={
           trace && {
-            parameter: Float64Array.from(trace.values, (logIndex) =>
-              fromLogIndex(logIndex, convention),
-            ),
+            parameter: Float64Array.from(trace.values, (linear) => linear + shift),
             limit: Float64Array.from(trace.limits),
           }
         }

@@ -6,7 +6,8 @@ import { IndexPlane } from '@/components/charts/index-plane';
 import type { MapData } from '@/components/charts/map-contours';
 import { countOf } from '@/components/runs/level-table';
 import type { LiveSample } from '@/components/runs/live-sample';
-import { TRACK, trackOf } from '@/components/runs/use-live-result';
+import { TRACK, trackOf } from '@/components/runs/tracks';
+import { useLiveTask } from '@/components/runs/use-live-task';
 import { FactsStrip } from '@/components/ui/facts-strip';
 import { JupiterMass } from '@/components/ui/notation';
 import { Notice } from '@/components/ui/notice';
@@ -28,7 +29,6 @@ import {
   betterStart,
   drawSeen,
   HARDLY_SEEN,
-  limitPlane,
   marginOf,
   PLANETS,
   previewAnswer,
@@ -257,16 +257,11 @@ function Plane({
   // The plane does not depend on where in it the present indices lie, only on whether they do.
   const [massFrom, massTo] = trackOf(TRACK.massIndex, alpha);
   const [axisFrom, axisTo] = trackOf(TRACK.semiMajorAxisIndex, beta);
-  const ranges = JSON.stringify({ ...definition, massIndex: 0, semiMajorAxisIndex: 0 });
-  const priorText = JSON.stringify(prior);
-  const plane = useMemo(
-    () =>
-      limitPlane(
-        sample,
-        { definition: JSON.parse(ranges), prior: JSON.parse(priorText), credibleLevel },
-        { massIndex: [massFrom, massTo], semiMajorAxisIndex: [axisFrom, axisTo] },
-      ),
-    [sample, ranges, priorText, credibleLevel, massFrom, massTo, axisFrom, axisTo],
+  const { answer: plane, fault } = useLiveTask(
+    sample,
+    'limitPlane',
+    { definition: { ...definition, massIndex: 0, semiMajorAxisIndex: 0 }, prior, credibleLevel },
+    { massIndex: [massFrom, massTo], semiMajorAxisIndex: [axisFrom, axisTo] },
   );
   const present = useMemo(
     () => previewAnswer(sample, here)?.withDetections ?? null,
@@ -290,6 +285,10 @@ function Plane({
           quantity="host_fraction"
           levelLabel={level}
         />
+      ) : plane === undefined && present ? (
+        <p className="text-ink2 text-note" role="status">
+          {fault === undefined ? 'Computing the limit over both indices.' : `No plane: ${fault}.`}
+        </p>
       ) : (
         <p className="text-ink2 text-note">
           No limit at <i>α</i> = {formatIndex(alpha)}, <i>β</i> = {formatIndex(beta)}: nothing of

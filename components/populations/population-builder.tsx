@@ -5,17 +5,16 @@ import type { MapData } from '@/components/charts/map-contours';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
-import { spread, traceIndex } from '@/components/runs/consequences';
 import { orNull } from '@/components/runs/live-answer';
-import { sampleOf } from '@/components/runs/live-sample';
-import type { Query } from '@/components/runs/live-setting';
+import { type LiveSample, sampleOf } from '@/components/runs/live-sample';
+import type { LiveSetting, Query } from '@/components/runs/live-setting';
 import { profileAlong } from '@/components/runs/survey-sums';
-import { TRACK, trackOf } from '@/components/runs/use-live-result';
+import { useLiveTask } from '@/components/runs/use-live-task';
 import { Button } from '@/components/ui/button';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
-import { fromLogIndex, populationWeights, toLogIndex } from '@/lib/population';
+import { populationWeights } from '@/lib/population';
 import type { PopulationDefinition, PopulationView } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
@@ -187,24 +186,20 @@ function usePreview(collaboration: string, run: RunView | null) {
 }
 
 /** Limits against each index: they follow once a drag has ended. */
-function useTraces(sample: ReturnType<typeof sampleOf> | undefined, settled: BuilderSetting) {
-  const { definition, prior, credibleLevel } = settled;
-  return useMemo(() => {
-    if (!sample) return undefined;
-    const asked = {
-      definition,
-      prior,
-      credibleLevel,
-      detections: 'counted' as const,
-      likelihood: 'host-fraction' as const,
-    };
-    const trace = (field: 'massIndex' | 'semiMajorAxisIndex') => {
-      const [from, to] = trackOf(TRACK[field], fromLogIndex(definition[field], 'linear'));
-      const indices = spread([from, to]).map((index) => toLogIndex(index, 'linear'));
-      return traceIndex(sample, asked, field === 'massIndex' ? 'mass' : 'semiMajorAxis', indices);
-    };
-    return { massIndex: trace('massIndex'), semiMajorAxisIndex: trace('semiMajorAxisIndex') };
-  }, [sample, definition, prior, credibleLevel]);
+function useTraces(
+  sample: LiveSample | undefined,
+  { definition, prior, credibleLevel }: BuilderSetting,
+) {
+  const asked: LiveSetting = {
+    definition,
+    prior,
+    credibleLevel,
+    detections: 'counted',
+    likelihood: 'host-fraction',
+  };
+  const mass = useLiveTask(sample, 'linearTrace', asked, asked, 'massIndex');
+  const axis = useLiveTask(sample, 'linearTrace', asked, asked, 'semiMajorAxisIndex');
+  return sample && { massIndex: mass.answer, semiMajorAxisIndex: axis.answer };
 }
 
 function orbitWords(run: RunView | null): string {

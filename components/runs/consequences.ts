@@ -1,11 +1,18 @@
-import { fitPrior, type PriorLaw, priorOfLaw } from '@/components/analyses/prior-choice';
-import { answerFromView, type Likelihood, type PopulationView, upperLimit } from '@/lib/inference';
-import { populationWeights } from '@/lib/population';
+import { fitPrior, type PriorLaw, priorLaws, priorOfLaw } from '@/components/analyses/prior-choice';
+import {
+  answerFromView,
+  type Likelihood,
+  type PopulationView,
+  upperLimit,
+  viewPopulation,
+} from '@/lib/inference';
+import { fromLogIndex, populationWeights, toLogIndex } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { contract, type MovingAxis, weighContracted } from './contracted';
 import { askedOf, orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
+import { TRACK, trackOf } from './tracks';
 
 /** The limit as a function of one control, all others standing still. */
 export interface Trace {
@@ -97,4 +104,52 @@ export function switchConsequences(
       ]),
     ),
   };
+}
+
+/** What every other position of every control would give. */
+export interface Consequences {
+  /** Against the linear index. */
+  massIndex: Trace;
+  semiMajorAxisIndex: Trace;
+  /** Against the level [fraction]. */
+  level: Trace;
+  switches: SwitchConsequences;
+}
+
+const LEVEL_STEPS = 48;
+
+/** @returns null where the population lies outside the maps */
+export function consequencesOf(
+  sample: LiveSample,
+  setting: LiveSetting,
+  saved: LiveSetting,
+): Consequences | null {
+  const view = orNull(() => viewPopulation(sample.maps, sample.grid, setting.definition));
+  if (view === null) return null;
+  const levels = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
+  const laws = [...new Set([...priorLaws(setting.likelihood), setting.prior.law])];
+  return {
+    massIndex: linearTrace(sample, setting, saved, 'massIndex'),
+    semiMajorAxisIndex: linearTrace(sample, setting, saved, 'semiMajorAxisIndex'),
+    level: traceLevel(sample, view, setting, spread(levels, LEVEL_STEPS)),
+    switches: switchConsequences(sample, view, setting, laws),
+  };
+}
+
+/** The track of an index between its ends, both in the linear convention. */
+export function linearTrace(
+  sample: LiveSample,
+  setting: LiveSetting,
+  saved: LiveSetting,
+  field: 'massIndex' | 'semiMajorAxisIndex',
+): Trace {
+  const linear = (of: LiveSetting) => fromLogIndex(of.definition[field], 'linear');
+  const values = spread(trackOf(TRACK[field], linear(setting), linear(saved)));
+  const { limits } = traceIndex(
+    sample,
+    setting,
+    field === 'massIndex' ? 'mass' : 'semiMajorAxis',
+    values.map((index) => toLogIndex(index, 'linear')),
+  );
+  return { values, limits };
 }

@@ -1,7 +1,6 @@
 'use client';
 
 import { type ReactNode, useMemo, useState } from 'react';
-import type { MapData } from '@/components/charts/map-contours';
 import { PosteriorChart, type PosteriorView } from '@/components/charts/posterior-chart';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
@@ -12,14 +11,14 @@ import { Notice } from '@/components/ui/notice';
 import { Plate } from '@/components/ui/plate';
 import { TextAction } from '@/components/ui/text-action';
 import { describeLevel, describePrior } from '@/lib/inference';
-import { isInside, populationWeights } from '@/lib/population';
+import { isInside } from '@/lib/population';
 import { formatLimit } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
 import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
-import { orNull, savedAnswer } from './live-answer';
+import { savedAnswer } from './live-answer';
 import { sampleOf } from './live-sample';
 import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
@@ -28,9 +27,10 @@ import { ResultConsole } from './result-console';
 import { conditionRows, ResultStatement } from './result-statement';
 import { SensitivitySection } from './sensitivity-section';
 import { StarsSection } from './stars-section';
-import { depthOf, profileAlong, sumBySurvey } from './survey-sums';
 import { useAnnounced } from './use-announced';
-import { useConsequences, useLiveResult } from './use-live-result';
+import { useLiveResult } from './use-live-result';
+import { useLiveTask } from './use-live-task';
+import { useMapFigures } from './use-map-figures';
 
 interface ResultBodyProps {
   collaboration: string;
@@ -53,7 +53,12 @@ export function ResultBody(props: ResultBodyProps) {
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);
   const sample = useMemo(() => maps && sampleOf(inputs, maps), [inputs, maps]);
   const outcome = useLiveResult(sample, setting);
-  const consequences = useConsequences(sample, setting, inRun);
+  const { answer: consequences, fault: trackFault } = useLiveTask(
+    sample,
+    'consequences',
+    setting,
+    inRun,
+  );
   const saved = useMemo(
     () => ({ answer: savedAnswer(result.answer), zero: savedAnswer(result.zero) }),
     [result],
@@ -71,36 +76,7 @@ export function ResultBody(props: ResultBodyProps) {
   const { definition } = shownSetting;
   const savedQuantity = quantityOf(inRun.likelihood);
 
-  const grid = useMemo(
-    () => ({
-      massMjup: Float64Array.from(result.meanMap.massMjup),
-      semiMajorAxisAu: Float64Array.from(result.meanMap.semiMajorAxisAu),
-    }),
-    [result],
-  );
-  const map: MapData = useMemo(
-    () => ({ ...grid, completeness: Float64Array.from(result.meanMap.completeness.flat()) }),
-    [grid, result],
-  );
-  const sums = useMemo(() => sample && sumBySurvey(sample, inputs.surveys), [sample, inputs]);
-  const weights = useMemo(
-    () => orNull(() => populationWeights(grid, setting.definition)),
-    [grid, setting.definition],
-  );
-  const depth = useMemo(
-    () => (sums && weights ? depthOf(sums, weights) : savedDepth(result, inputs)),
-    [sums, weights, result, inputs],
-  );
-  const profiles = useMemo(
-    () =>
-      weights
-        ? {
-            mass: profileAlong(map.completeness, weights, 'mass'),
-            semiMajorAxis: profileAlong(map.completeness, weights, 'semiMajorAxis'),
-          }
-        : undefined,
-    [map, weights],
-  );
+  const { grid, map, depth, profiles } = useMapFigures(result, inputs, sample, setting.definition);
 
   const counted = live
     ? live.full.counted.map(({ name }) => name)
@@ -202,11 +178,17 @@ export function ResultBody(props: ResultBodyProps) {
           saved={inRun}
           quantity={quantityOf(setting.likelihood)}
           grid={grid}
-          consequences={consequences}
+          consequences={consequences ?? undefined}
           profiles={profiles}
           countedLabel={insideCount === 1 ? '1 vetted' : `${insideCount} vetted`}
           onSetting={onSetting}
         />
+        {trackFault !== undefined && (
+          <p className="mt-2 text-note text-warn" role="status">
+            The limits along the tracks could not be computed: {trackFault}. Number and curve follow
+            the controls all the same.
+          </p>
+        )}
         {!maps && error === undefined && (
           <p className="mt-2 text-ink3 text-note" role="status">
             Fetching the maps of {result.stars} stars; until then the numbers are those of run{' '}
@@ -312,13 +294,4 @@ export function ResultBody(props: ResultBodyProps) {
       </FootBar>
     </>
   );
-}
-
-function savedDepth(result: RunResult, inputs: RunInputs) {
-  return result.depth.surveys.flatMap(({ id, stars }) => {
-    const survey = inputs.surveys.find((one) => one.id === id);
-    return survey
-      ? [{ name: survey.name, seriesIndex: survey.position, depth: Float64Array.from(stars) }]
-      : [];
-  });
 }

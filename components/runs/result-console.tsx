@@ -20,8 +20,9 @@ import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import type { PopulationDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
+import type { Consequences } from './consequences';
 import { type LiveSetting, tidy } from './live-setting';
-import { type Consequences, TRACK, trackOf } from './use-live-result';
+import { TRACK, trackOf } from './tracks';
 
 interface ResultConsoleProps {
   setting: LiveSetting;

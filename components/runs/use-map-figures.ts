@@ -1,0 +1,58 @@
+'use client';
+
+import { useMemo } from 'react';
+import type { DepthSeries } from '@/components/charts/depth-chart';
+import type { MapData } from '@/components/charts/map-contours';
+import { populationWeights } from '@/lib/population';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import { orNull } from './live-answer';
+import type { LiveSample } from './live-sample';
+import { depthOf, profileAlong, sumBySurvey } from './survey-sums';
+
+/** The mean map of a run, and what follows from it for a population: depth and profiles. */
+export function useMapFigures(
+  result: RunResult,
+  inputs: RunInputs,
+  sample: LiveSample | undefined,
+  definition: PopulationDefinition,
+) {
+  const map: MapData = useMemo(
+    () => ({
+      massMjup: Float64Array.from(result.meanMap.massMjup),
+      semiMajorAxisAu: Float64Array.from(result.meanMap.semiMajorAxisAu),
+      completeness: Float64Array.from(result.meanMap.completeness.flat()),
+    }),
+    [result],
+  );
+  const sums = useMemo(() => sample && sumBySurvey(sample, inputs.surveys), [sample, inputs]);
+  const weights = useMemo(
+    () => orNull(() => populationWeights(map, definition)),
+    [map, definition],
+  );
+  const depth = useMemo(
+    () => (sums && weights ? depthOf(sums, weights) : savedDepth(result, inputs)),
+    [sums, weights, result, inputs],
+  );
+  const profiles = useMemo(
+    () =>
+      weights
+        ? {
+            mass: profileAlong(map.completeness, weights, 'mass'),
+            semiMajorAxis: profileAlong(map.completeness, weights, 'semiMajorAxis'),
+          }
+        : undefined,
+    [map, weights],
+  );
+  return { grid: map, map, depth, profiles };
+}
+
+/** Until the maps are there: the depth that the run itself stored. */
+function savedDepth(result: RunResult, inputs: RunInputs): DepthSeries[] {
+  return result.depth.surveys.flatMap(({ id, stars }) => {
+    const survey = inputs.surveys.find((one) => one.id === id);
+    return survey
+      ? [{ name: survey.name, seriesIndex: survey.position, depth: Float64Array.from(stars) }]
+      : [];
+  });
+}
