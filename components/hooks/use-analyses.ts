@@ -16,7 +16,8 @@ export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
     async (path) => (await request(path, analysisListSchema)).analyses,
     {
       fallbackData: fallback,
-      refreshInterval: (list) =>
+      // Before the first answer of its own SWR knows nothing of the fallback.
+      refreshInterval: (list = fallback) =>
         list?.some((analysis) => analysis.state === 'running') ? POLL_MS : 0,
     },
   );
@@ -26,7 +27,7 @@ export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
 export function useAnalysis(collaboration: string, key: string, fallback?: AnalysisView) {
   return useSWR(apiPath(collaboration, 'analyses', key), (path) => request(path, analysisSchema), {
     fallbackData: fallback,
-    refreshInterval: (analysis) => (analysis?.state === 'running' ? POLL_MS : 0),
+    refreshInterval: (analysis = fallback) => (analysis?.state === 'running' ? POLL_MS : 0),
   });
 }
 

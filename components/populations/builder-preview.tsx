@@ -146,7 +146,7 @@ function PreviewFacts({
         facts={[
           { name: 'mean detection probability', value: formatPercent(view.exposure / stars) },
           {
-            name: 'sum over the stars',
+            name: 'sum over stars',
             value: formatSignificant(view.exposure, 3),
             note: `of ${stars}`,
           },
@@ -221,7 +221,9 @@ function Warnings({
               <TextAction
                 onClick={() => onDefinition({ ...definition, massMinMjup: better.massMinMjup })}
               >
-                Start at {better.massMinMjup} <JupiterMass />
+                <span>
+                  Start at {better.massMinMjup} <JupiterMass />
+                </span>
               </TextAction>
             )
           }

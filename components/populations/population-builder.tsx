@@ -119,7 +119,7 @@ export function PopulationBuilder(props: PopulationBuilderProps) {
           </>
         }
       />
-      <div className="grid gap-x-[52px] gap-y-8 pb-10 xl:grid-cols-[470px_minmax(0,1fr)]">
+      <div className="grid gap-x-[48px] gap-y-8 pb-10 xl:grid-cols-[454px_minmax(0,1fr)]">
         <div className="min-w-0">
           <BuilderControls
             setting={setting}

@@ -73,7 +73,7 @@ export function ResultActions(props: ResultActionsProps) {
     <>
       {isUnsaved ? (
         <>
-          <Button icon="undo" onClick={onUndo}>
+          <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>
             {isFoot ? <span className="sr-only">Undo</span> : 'Undo'}
           </Button>
           {analysis.can.copy && !(isFoot && mayChange) && (
@@ -87,7 +87,13 @@ export function ResultActions(props: ResultActionsProps) {
             </Button>
           )}
           {mayChange && (
-            <Button variant="primary" onClick={save} isBusy={work === 'save'} disabledReason={wait}>
+            <Button
+              variant="primary"
+              className={isFoot ? '' : 'max-md:hidden'}
+              onClick={save}
+              isBusy={work === 'save'}
+              disabledReason={wait}
+            >
               {isFoot ? `Run ${next}` : `Save as run ${next}`}
             </Button>
           )}

@@ -1,6 +1,6 @@
 'use client';
 
-import { type ReactNode, useMemo, useState } from 'react';
+import { type ReactNode, useCallback, useDeferredValue, useMemo, useRef, useState } from 'react';
 import { PosteriorChart, type PosteriorView } from '@/components/charts/posterior-chart';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
@@ -10,23 +10,19 @@ import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
 import { Plate } from '@/components/ui/plate';
 import { TextAction } from '@/components/ui/text-action';
-import { describeLevel, describePrior } from '@/lib/inference';
-import { isInside } from '@/lib/population';
+import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
-import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PopulationDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
-import { DetectionsSection } from './detections-section';
-import { LevelTable, percentBelow } from './level-table';
-import { savedAnswer } from './live-answer';
 import { sampleOf } from './live-sample';
-import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
+import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
 import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
 import { ResultConsole } from './result-console';
+import { ResultSections } from './result-sections';
 import { conditionRows, ResultStatement } from './result-statement';
-import { SensitivitySection } from './sensitivity-section';
-import { StarsSection } from './stars-section';
+import { type ShownResult, showResult } from './shown-result';
 import { useAnnounced } from './use-announced';
 import { useLiveResult } from './use-live-result';
 import { useLiveTask } from './use-live-task';
@@ -34,7 +30,6 @@ import { useMapFigures } from './use-map-figures';
 
 interface ResultBodyProps {
   collaboration: string;
-  analysis: AnalysisView;
   run: RunView;
   inputs: RunInputs;
   result: RunResult;
@@ -53,103 +48,21 @@ export function ResultBody(props: ResultBodyProps) {
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);
   const sample = useMemo(() => maps && sampleOf(inputs, maps), [inputs, maps]);
   const outcome = useLiveResult(sample, setting);
-  const { answer: consequences, fault: trackFault } = useLiveTask(
-    sample,
-    'consequences',
-    setting,
-    inRun,
+  const tracks = useLiveTask(sample, 'consequences', setting, inRun);
+  const shown = useMemo(
+    () => showResult(inputs, result, inRun, setting, outcome),
+    [inputs, result, inRun, setting, outcome],
   );
-  const saved = useMemo(
-    () => ({ answer: savedAnswer(result.answer), zero: savedAnswer(result.zero) }),
-    [result],
+  const { map, depth, profiles } = useMapFigures(result, inputs, sample, setting.definition);
+  const onDefinition = useLatestDefinition(setting, onSetting);
+  const later = useDeferredValue(
+    useMemo(() => ({ shown, depth, definition: setting.definition }), [shown, depth, setting]),
   );
-  const [view, setView] = useState<PosteriorView>('density');
-
-  const isLive = !isSameSetting(setting, inRun);
-  const live = outcome?.live;
-  // Until the maps are there a moved setting has no number: the run's own stands, and says so.
-  const shownSetting = live ? setting : inRun;
-  const quantity = quantityOf(shownSetting.likelihood);
-  const answer = live?.answer ?? saved.answer;
-  const zero = live?.zero ?? saved.zero;
-  const levels = live?.levels ?? result.levels;
-  const { definition } = shownSetting;
-  const savedQuantity = quantityOf(inRun.likelihood);
-
-  const { grid, map, depth, profiles } = useMapFigures(result, inputs, sample, setting.definition);
-
-  const counted = live
-    ? live.full.counted.map(({ name }) => name)
-    : result.counted.map(({ name }) => name);
-  const setAside = (reason: string) =>
-    live?.full.setAside.flatMap((one) => (one.reason === reason ? [one.detection.name] : [])) ?? [];
-  const outside = live
-    ? inputs.companions
-        .filter((one) => !isInside(definition, one.massMjup, one.semiMajorAxisAu))
-        .map(({ name }) => name)
-    : result.outside.map(({ name }) => name);
-  const shareOutsideMaps = outcome?.view?.shareOutsideMap ?? result.shareOutsideMaps;
-  const exposure = outcome?.view?.exposure ?? result.exposure;
-  const insideCount = inputs.companions.length - outside.length;
-  const limitText = formatLimit(answer.limit, quantity);
-  const announced = useAnnounced(
-    isLive && live
-      ? `Limit ${limitText.replace('<', 'below ')}, saved ${formatLimit(saved.answer.limit, savedQuantity).replace('<', 'below ')}`
-      : '',
-  );
-  const foot = (
-    <>
-      <MassRange definition={definition} />, <AxisRange definition={definition} />;{' '}
-      {describePrior(shownSetting.prior, quantity)}.
-    </>
-  );
-  const steps = provenanceSteps(collaboration, run).length;
-  const stepLevel = (level: number) => levels.find((row) => Math.abs(row.level - level) < 1e-9);
+  const insideCount = inputs.companions.length - shown.outside.length;
 
   return (
     <>
-      <Plate className="grid gap-x-[26px] gap-y-6 xl:grid-cols-[440px_1fr]">
-        <div className={isLive && !live ? 'opacity-60' : undefined}>
-          <ResultStatement
-            setting={shownSetting}
-            quantity={quantity}
-            answer={answer}
-            mark={isLive ? (live ? 'live' : `run ${run.number}`) : undefined}
-            bounds={{
-              mass: [grid.massMjup[0], grid.massMjup[grid.massMjup.length - 1]],
-              axis: [
-                grid.semiMajorAxisAu[0],
-                grid.semiMajorAxisAu[grid.semiMajorAxisAu.length - 1],
-              ],
-            }}
-            conditions={conditionRows({
-              setting: shownSetting,
-              quantity,
-              stars: result.stars,
-              counted,
-              outside,
-              merged: live ? setAside('star-already-counted') : result.mergedNames,
-              cooling: inputs.cooling,
-              shareOutsideMaps,
-              answer,
-              atTenthOfFloor: live ? live.atTenthOfFloor : result.atTenthOfFloor,
-            })}
-            announced={announced}
-            onDefinition={(next) => onSetting({ ...setting, definition: next })}
-          />
-        </div>
-        <PosteriorChart
-          {...posteriorData({
-            setting: shownSetting,
-            quantity,
-            answer,
-            zero: counted.length > 0 ? zero : undefined,
-            saved: isLive && live && savedQuantity === quantity ? saved.answer : undefined,
-          })}
-          view={view}
-          onViewChange={setView}
-        />
-      </Plate>
+      <ResultPlate {...{ run, inputs, result, shown, onDefinition }} grid={map} />
       {outcome?.fault !== undefined && (
         <div className="mt-3">
           <Notice tone="bad" title="This setting has no answer." isAnnounced>
@@ -177,16 +90,16 @@ export function ResultBody(props: ResultBodyProps) {
           setting={setting}
           saved={inRun}
           quantity={quantityOf(setting.likelihood)}
-          grid={grid}
-          consequences={consequences ?? undefined}
+          grid={map}
+          consequences={tracks.answer ?? undefined}
           profiles={profiles}
           countedLabel={insideCount === 1 ? '1 vetted' : `${insideCount} vetted`}
           onSetting={onSetting}
         />
-        {trackFault !== undefined && (
+        {tracks.fault !== undefined && (
           <p className="mt-2 text-note text-warn" role="status">
-            The limits along the tracks could not be computed: {trackFault}. Number and curve follow
-            the controls all the same.
+            The limits along the tracks could not be computed: {tracks.fault}. Number and curve
+            follow the controls all the same.
           </p>
         )}
         {!maps && error === undefined && (
@@ -198,83 +111,32 @@ export function ResultBody(props: ResultBodyProps) {
       </div>
       <ChecksStrip
         inputs={inputs}
-        shareOutsideMaps={shareOutsideMaps}
+        shareOutsideMaps={shown.shareOutsideMaps}
         shareFlaggedCooling={result.shareFlaggedCooling}
         undecidedInside={inputs.undecided
           .filter((candidate) => candidate.insideRanges !== false)
           .map(({ name }) => name)}
-        ofRun={isLive ? run.number : undefined}
+        ofRun={shown.isLive ? run.number : undefined}
       />
-      <div className="grid min-w-0 gap-x-[60px] md:gap-y-8 xl:grid-cols-[minmax(0,780fr)_minmax(0,520fr)]">
-        <SensitivitySection
-          map={map}
-          stars={result.stars}
-          exposure={exposure}
-          depth={depth}
-          definition={setting.definition}
-          companions={inputs.companions}
-          onDefinition={(next) => onSetting({ ...setting, definition: next })}
-        />
-        <div className="grid min-w-0 content-start md:gap-y-8">
-          <FoldSection
-            number={3}
-            title="Limits by credible level"
-            answer={[0.9, 0.99]
-              .flatMap((level) => {
-                const row = stepLevel(level);
-                const limit = quantity === 'host_fraction' ? row?.hostFraction : row?.meanNumber;
-                return row
-                  ? [`${percentBelow(limit ?? null)}\u2009% at ${describeLevel(level)}`]
-                  : [];
-              })
-              .join(', ')}
-          >
-            <LevelTable
-              levels={levels}
-              credibleLevel={shownSetting.credibleLevel}
-              quantity={quantity}
-              detections={counted.length}
-              foot={foot}
-            />
-          </FoldSection>
-          <DetectionsSection
-            companions={inputs.companions}
-            undecided={inputs.undecided}
-            counted={counted}
-            outside={outside}
-            ofRun={isLive ? run.number : undefined}
-          />
-        </div>
-      </div>
-      <div className="md:mt-8">
-        <StarsSection
-          inputs={inputs}
-          result={result}
-          sample={sample}
-          view={outcome?.view}
-          setting={shownSetting}
-          limit={answer.limit}
-          quantity={quantity}
-          counted={
-            live
-              ? live.full.counted.map(({ name, star }) => ({
-                  name,
-                  starId: inputs.stars[star].starId,
-                }))
-              : result.counted
-          }
-        />
-      </div>
+      <ResultSections
+        inputs={inputs}
+        result={result}
+        runNumber={run.number}
+        sample={sample}
+        map={map}
+        {...later}
+        onDefinition={onDefinition}
+      />
       <div className="pb-10 md:mt-8">
         <FoldSection
           number={6}
           title="Provenance"
           context={
-            isUnsaved || isLive
+            isUnsaved || shown.isLive
               ? `run ${run.number}; a live change is not recorded until you save`
               : 'everything this number was made from, unchanged since the run'
           }
-          answer={`${steps} steps, unchanged since run ${run.number}`}
+          answer={`${provenanceSteps(collaboration, run).length} steps, unchanged since run ${run.number}`}
         >
           <Provenance collaboration={collaboration} run={run} />
           <ProvenanceDetails run={run} result={result} />
@@ -283,15 +145,89 @@ export function ResultBody(props: ResultBodyProps) {
       <FootBar>
         <div className="min-w-0 flex-1 leading-[1.2]">
           <b className="block text-[22px] text-bound">
-            {answer.isConstrained ? limitText : 'no limit'}
+            {shown.answer.isConstrained
+              ? formatLimit(shown.answer.limit, shown.quantity)
+              : 'no limit'}
           </b>
           <span className="text-chart text-ink3">
-            {describeLevel(shownSetting.credibleLevel)}, <MassRange definition={definition} />,{' '}
-            <AxisRange definition={definition} />
+            {describeLevel(shown.setting.credibleLevel)},{' '}
+            <MassRange definition={shown.setting.definition} />,{' '}
+            <AxisRange definition={shown.setting.definition} />
           </span>
         </div>
         {props.footActions}
       </FootBar>
     </>
   );
+}
+
+/** The statement beside its posterior. */
+function ResultPlate({
+  run,
+  inputs,
+  result,
+  shown,
+  grid,
+  onDefinition,
+}: {
+  run: RunView;
+  inputs: RunInputs;
+  result: RunResult;
+  shown: ShownResult;
+  grid: { massMjup: Float64Array; semiMajorAxisAu: Float64Array };
+  onDefinition(definition: PopulationDefinition): void;
+}) {
+  const [view, setView] = useState<PosteriorView>('density');
+  const { quantity, saved, isLive, isOfRun, ...numbers } = shown;
+  const spoken = (limit: number, of: typeof quantity) =>
+    formatLimit(limit, of).replace('<', 'below ');
+  const announced = useAnnounced(
+    isLive && !isOfRun
+      ? `Limit ${spoken(shown.answer.limit, quantity)}, saved ${spoken(saved.answer.limit, saved.quantity)}`
+      : '',
+  );
+  const ends = (nodes: Float64Array): [number, number] => [nodes[0], nodes[nodes.length - 1]];
+  return (
+    <Plate className="grid gap-x-[26px] gap-y-6 xl:grid-cols-[440px_1fr]">
+      <div className={isOfRun ? 'opacity-60' : undefined}>
+        <ResultStatement
+          setting={shown.setting}
+          quantity={quantity}
+          answer={shown.answer}
+          mark={isOfRun ? `run ${run.number}` : isLive ? 'live' : undefined}
+          bounds={{ mass: ends(grid.massMjup), axis: ends(grid.semiMajorAxisAu) }}
+          conditions={conditionRows({
+            ...numbers,
+            quantity,
+            stars: result.stars,
+            counted: shown.counted.map(({ name }) => name),
+            cooling: inputs.cooling,
+          })}
+          announced={announced}
+          onDefinition={onDefinition}
+        />
+      </div>
+      <PosteriorChart
+        {...posteriorData({
+          setting: shown.setting,
+          quantity,
+          answer: shown.answer,
+          zero: shown.counted.length > 0 ? shown.zero : undefined,
+          saved: isLive && !isOfRun && saved.quantity === quantity ? saved.answer : undefined,
+        })}
+        view={view}
+        onViewChange={setView}
+      />
+    </Plate>
+  );
+}
+
+/** A handler that stays the same, so that what is memoised is not drawn anew for its sake. */
+function useLatestDefinition(setting: LiveSetting, onSetting: (setting: LiveSetting) => void) {
+  const latest = useRef({ setting, onSetting });
+  latest.current = { setting, onSetting };
+  return useCallback((definition: PopulationDefinition) => {
+    const { setting: present, onSetting: change } = latest.current;
+    change({ ...present, definition });
+  }, []);
 }

@@ -135,7 +135,6 @@ export function ResultScreen(props: ResultScreenProps) {
         <ResultBody
           key={run.id}
           collaboration={collaboration}
-          analysis={analysis}
           run={run}
           inputs={run.inputs}
           result={run.result}

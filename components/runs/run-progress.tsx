@@ -7,6 +7,7 @@ import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { ProgressLine } from '@/components/ui/progress-line';
 import { TextAction } from '@/components/ui/text-action';
+import type { JobView } from '@/lib/schemas/jobs';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { formatDuration } from './time-words';
 
@@ -16,6 +17,22 @@ interface RunProgressProps {
   canStop: boolean;
   /** The server's state has changed: ask again. */
   onChanged(): void;
+}
+
+/** The stages that a run goes through, in their order. */
+const stages = [
+  { key: 'collect', label: 'Stars and overlaps' },
+  { key: 'combine', label: 'Maps of shared stars' },
+  { key: 'integrate', label: 'Completeness maps' },
+  { key: 'posterior', label: 'Posterior and limits' },
+  { key: 'store', label: 'Storing the result' },
+];
+
+function stageState(job: JobView, index: number): 'done' | 'running' | 'waiting' {
+  if (job.status === 'waiting') return 'waiting';
+  const here = stages.findIndex((stage) => stage.key === job.stage);
+  if (index < here) return 'done';
+  return index === here ? 'running' : 'waiting';
 }
 
 /** A run on its way: stage, counts, time left, and the way to stop it. */
@@ -38,23 +55,37 @@ export function RunProgress({ collaboration, run, canStop, onChanged }: RunProgr
 
   return (
     <section aria-label={`Run ${run.number} on its way`} aria-live="polite">
-      <ProgressLine
-        label={isWaiting ? 'Waiting for a worker' : sentenceCase(job.stage || 'starting')}
-        accessibleName={`Run ${run.number}, ${job.stage || 'waiting'}`}
-        done={job.done}
-        total={job.total}
-        state={isWaiting ? 'waiting' : 'running'}
-        time={job.timeLeftS === null ? undefined : `about ${formatDuration(job.timeLeftS)} left`}
-        action={
-          canStop ? (
-            <Button size="small" onClick={stop} isBusy={isStopping || job.cancelRequested}>
-              {job.cancelRequested ? 'Stopping' : 'Stop'}
-            </Button>
-          ) : undefined
-        }
-      />
+      {stages.map((stage, index) => {
+        const state = stageState(job, index);
+        const isHere = state === 'running' || (isWaiting && index === 0);
+        return (
+          <ProgressLine
+            key={stage.key}
+            label={stage.label}
+            accessibleName={`Run ${run.number}, ${stage.label}`}
+            done={state === 'running' ? job.done : state === 'done' ? 1 : 0}
+            total={state === 'running' ? job.total : 1}
+            state={state}
+            time={
+              state === 'running' && job.timeLeftS !== null
+                ? `about ${formatDuration(job.timeLeftS)} left`
+                : ''
+            }
+            action={
+              isHere && canStop ? (
+                <Button size="small" onClick={stop} isBusy={isStopping || job.cancelRequested}>
+                  {job.cancelRequested ? 'Stopping' : 'Stop'}
+                </Button>
+              ) : undefined
+            }
+          />
+        );
+      })}
       <p className="mt-2 text-ink3 text-note">
-        Run {run.number} is computed by the workers. You may leave; the result is kept.
+        {isWaiting
+          ? `Run ${run.number} waits for a worker.`
+          : `Run ${run.number} is computed by the workers.`}{' '}
+        You may leave; the result is kept.
       </p>
       {problem !== undefined && (
         <Notice tone="bad" title="It was not stopped." isAnnounced>
@@ -101,8 +132,4 @@ export function RunEnded({ collaboration, run, canStop, onChanged }: RunProgress
       {problem ?? job.fault ?? (wasStopped ? 'Nothing of it was stored.' : 'It gave no reason.')}
     </Notice>
   );
-}
-
-function sentenceCase(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
 }

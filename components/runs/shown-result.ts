@@ -1,0 +1,83 @@
+import type { RateQuantity } from '@/lib/inference';
+import { isInside } from '@/lib/population';
+import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import { type LimitAnswer, savedAnswer } from './live-answer';
+import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
+import type { LiveOutcome } from './use-live-result';
+
+/** What a result shows: of the present setting where it has an answer, otherwise of the run. */
+export interface ShownResult {
+  /** The setting that the numbers belong to. */
+  setting: LiveSetting;
+  quantity: RateQuantity;
+  answer: LimitAnswer;
+  zero: LimitAnswer;
+  levels: RunResult['levels'];
+  atTenthOfFloor: number | null;
+  counted: { name: string; starId: string }[];
+  /** Names of confirmed companions outside the ranges, and of second ones of a star. */
+  outside: string[];
+  merged: string[];
+  exposure: number;
+  shareOutsideMaps: number;
+  /** Shape [star]; undefined until the maps are there. */
+  view: LiveOutcome['view'];
+  saved: { answer: LimitAnswer; quantity: RateQuantity };
+  /** The present setting is not the run's. */
+  isLive: boolean;
+  /** The present setting has no answer of its own (yet): the run's stands in its place. */
+  isOfRun: boolean;
+}
+
+export function showResult(
+  inputs: RunInputs,
+  result: RunResult,
+  inRun: LiveSetting,
+  setting: LiveSetting,
+  outcome: LiveOutcome | undefined,
+): ShownResult {
+  const saved = { answer: savedAnswer(result.answer), quantity: quantityOf(inRun.likelihood) };
+  const isLive = !isSameSetting(setting, inRun);
+  const live = outcome?.live;
+  if (!live) {
+    return {
+      setting: inRun,
+      quantity: saved.quantity,
+      answer: saved.answer,
+      zero: savedAnswer(result.zero),
+      levels: result.levels,
+      atTenthOfFloor: result.atTenthOfFloor,
+      counted: result.counted,
+      outside: result.outside.map(({ name }) => name),
+      merged: result.mergedNames,
+      exposure: result.exposure,
+      shareOutsideMaps: result.shareOutsideMaps,
+      view: undefined,
+      saved,
+      isLive,
+      isOfRun: isLive,
+    };
+  }
+  const { full } = live;
+  return {
+    setting,
+    quantity: quantityOf(setting.likelihood),
+    answer: live.answer,
+    zero: live.zero,
+    levels: live.levels,
+    atTenthOfFloor: live.atTenthOfFloor,
+    counted: full.counted.map(({ name, star }) => ({ name, starId: inputs.stars[star].starId })),
+    outside: inputs.companions
+      .filter((one) => !isInside(setting.definition, one.massMjup, one.semiMajorAxisAu))
+      .map(({ name }) => name),
+    merged: full.setAside.flatMap((one) =>
+      one.reason === 'star-already-counted' ? [one.detection.name] : [],
+    ),
+    exposure: full.exposure,
+    shareOutsideMaps: full.shareOutsideMap,
+    view: outcome.view,
+    saved,
+    isLive,
+    isOfRun: false,
+  };
+}
