@@ -92,7 +92,7 @@ export function OverviewScreen({
                 Invite people
               </LinkButton>
             )}
-            {can.addSurvey && (
+            {can.addSurvey && !isEmpty && (
               <LinkButton href={`${base}/surveys/new`} icon="add">
                 Add a survey
               </LinkButton>

@@ -89,7 +89,7 @@ export function MemberTable({
         <TableHead>
           <Row>
             <HeadCell>person</HeadCell>
-            <HeadCell>role</HeadCell>
+            <HeadCell className="max-md:hidden">role</HeadCell>
             <HeadCell className="max-md:hidden">leads</HeadCell>
             <HeadCell className="max-md:hidden">since</HeadCell>
             <HeadCell>
@@ -102,9 +102,14 @@ export function MemberTable({
             <Row key={member.id}>
               <Cell>
                 <span className="font-semibold">{member.person.name}</span>
-                <span className="block break-all text-[13px] text-ink3">{member.person.email}</span>
+                <span className="block text-[13px] text-ink3">{member.person.email}</span>
+                <span className="block text-[13px] md:hidden">
+                  {member.roles.map((role) => roleWords[role]).join(', ')}
+                </span>
               </Cell>
-              <Cell>{member.roles.map((role) => roleWords[role]).join(', ')}</Cell>
+              <Cell className="max-md:hidden">
+                {member.roles.map((role) => roleWords[role]).join(', ')}
+              </Cell>
               <Cell className="max-md:hidden">{member.leads.join(', ') || '–'}</Cell>
               <Cell className="whitespace-nowrap max-md:hidden">{dateOf(member.joinedAt)}</Cell>
               <Cell>

@@ -57,7 +57,7 @@ function Faults({
         return (
           <li
             key={`${fault.code}-${sentence}`}
-            className="flex flex-wrap items-baseline justify-between gap-x-4 bg-bad-soft px-3 py-1.5 text-[14px]"
+            className="flex flex-wrap items-baseline justify-between gap-x-4 bg-bad-soft py-1.5 pr-3.5 pl-[44px] text-[14px]"
           >
             <span className="min-w-0 break-words">{sentence}</span>
             {target !== null && (
@@ -67,7 +67,7 @@ function Faults({
         );
       })}
       {count > faults.length && (
-        <li className="px-3 py-1.5 text-[14px] text-ink3">
+        <li className="py-1.5 pl-[44px] text-[14px] text-ink3">
           {count} in all; the rest is alike or follows from these.
         </li>
       )}
@@ -145,7 +145,9 @@ function Items({ report }: { report: UploadReport }) {
         <TableBody>
           {shown.map((item) => (
             <Row key={`${item.name}-${item.summary}`}>
-              <Cell isRowHead>{item.name}</Cell>
+              <Cell isRowHead className="whitespace-nowrap">
+                {item.name}
+              </Cell>
               <Cell>{item.summary}</Cell>
               <Cell>
                 <StateMark kind={outcomeWords[item.outcome].kind}>
@@ -301,7 +303,9 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
                   className="flex gap-2 border-rule border-b py-1"
                 >
                   <StateMark kind={note.level === 'warning' ? 'warn' : 'waiting'}>
-                    {note.line === undefined ? (note.item ?? 'file') : `line ${note.line}`}
+                    <span className="whitespace-nowrap">
+                      {note.line === undefined ? (note.item ?? 'file') : `line ${note.line}`}
+                    </span>
                   </StateMark>
                   <span className="min-w-0 break-words">{note.message}</span>
                 </li>

@@ -115,7 +115,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
             <span className="block text-ink3 text-note">
               Maps: {describeMapSettings(survey.mapSettings, coolingName)}{' '}
               {survey.can.change && (
-                <TextAction className="ml-1" onClick={() => setSetting(true)}>
+                <TextAction onClick={() => setSetting(true)}>
                   Change<span className="sr-only"> how the maps are made</span>
                 </TextAction>
               )}

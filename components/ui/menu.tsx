@@ -66,7 +66,7 @@ export function Menu({
     <div ref={root} className="relative" onKeyDown={move}>
       <button
         type="button"
-        className={`flex max-w-[7.5rem] items-center md:max-w-[15rem] whitespace-nowrap ${looks[look]}`}
+        className={`flex max-w-[9.5rem] items-center md:max-w-[15rem] whitespace-nowrap ${looks[look]}`}
         aria-expanded={isOpen}
         aria-controls={listId}
         aria-label={accessibleName}

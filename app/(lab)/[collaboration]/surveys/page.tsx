@@ -20,9 +20,13 @@ export default async function SurveysPage({
     <>
       <PageTitle
         title="Surveys"
-        context={`${list.entries} entries, ${list.stars} stars; a star in several surveys counts once`}
+        context={
+          list.surveys.length > 0 &&
+          `${list.entries} entries, ${list.stars} stars; a star in several surveys counts once`
+        }
         actions={
-          canAdd && (
+          canAdd &&
+          list.surveys.length > 0 && (
             <LinkButton href={`/${actor.collaboration}/surveys/new`} variant="primary" icon="add">
               Add a survey
             </LinkButton>

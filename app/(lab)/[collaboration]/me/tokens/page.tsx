@@ -18,7 +18,7 @@ export default async function TokensPage({
     <>
       <PageTitle
         title="API tokens"
-        context="For scripts: a token reaches this collaboration only, and never does more than you may"
+        context="A token reaches this collaboration only, with no more than your own roles"
       />
       <div className="mt-2">
         <TokenPanel
