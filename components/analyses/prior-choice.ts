@@ -62,17 +62,3 @@ export function fitPrior(prior: RatePrior, likelihood: Likelihood): RatePrior {
   }
   return prior.law === 'beta' ? { law: 'uniform', max: 1 } : prior;
 }
-
-/**
- * The same prior for the other quantity, for the table that shows both: cut at 1 for a fraction.
- *
- * @returns null where the law has no counterpart: gamma belongs to a mean number, beta to a fraction
- */
-export function counterpart(prior: RatePrior, likelihood: Likelihood): RatePrior | null {
-  if (likelihood === 'mean-number') return prior.law === 'beta' ? null : prior;
-  if (prior.law === 'gamma') return null;
-  if (prior.law === 'log-uniform' && prior.min >= 1) return null;
-  return 'max' in prior && prior.max !== undefined
-    ? { ...prior, max: Math.min(prior.max, 1) }
-    : prior;
-}

@@ -1,4 +1,3 @@
-import { counterpart } from '@/components/analyses/prior-choice';
 import {
   type RateCurve,
   rateAxisMax,
@@ -14,6 +13,7 @@ import {
   limitAtLowerFloor,
   limitsByLevel,
   type PopulationView,
+  priorFor,
   type RatePosterior,
   TABLE_LEVELS,
 } from '@/lib/inference';
@@ -130,7 +130,7 @@ function tableOfLevels(
   none: Answer,
 ): RunResult['levels'] {
   const likelihood = otherLikelihood[asked.likelihood];
-  const prior = counterpart(asked.prior, likelihood);
+  const prior = priorFor(asked.prior, likelihood);
   const other = (detections: AnswerSettings['detections']) =>
     prior === null
       ? null

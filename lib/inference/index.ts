@@ -34,6 +34,7 @@ export {
 export type { LevelLimit } from './levels';
 export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
 export { ratePosterior } from './posterior';
+export { priorFor } from './prior-for';
 export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
 export {
   describeLevel,
