@@ -69,7 +69,7 @@ function asCompared(side: CompareScreenProps['sides'][number]): ComparedRun | un
 
 function titleOf(a: ComparedRun, b: ComparedRun): string {
   const [first, second] = [a.result.counted.length, b.result.counted.length];
-  if (first > 0 && second === 0) {
+  if (first > 0 && second === 0 && b.recipe.detections === 'none') {
     return `With ${inWords(first)} detection${first === 1 ? '' : 's'} and with none`;
   }
   return `${a.key} and ${b.key}`;

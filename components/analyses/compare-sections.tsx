@@ -57,7 +57,7 @@ export function ByLevel({ a, b }: { a: ComparedRun; b: ComparedRun }) {
   const chosen = (level: number) => Math.abs(level - a.result.credibleLevel) < 1e-9;
   return (
     <section className="min-w-0">
-      <SectionOpener number={2} title="By credible level" />
+      <SectionOpener number={3} title="By credible level" />
       <Table caption="Upper limits of both by credible level, with their ratio">
         <TableHead>
           <tr>
@@ -97,7 +97,7 @@ export function ComparisonInWords({ text }: { text: string }) {
   const [isCopied, setCopied] = useState(false);
   return (
     <section>
-      <SectionOpener number={3} title="In words" context="for a reply or a footnote" />
+      <SectionOpener number={2} title="In words" context="for a reply or a footnote" />
       <p className="text-body">{text}</p>
       <TextAction
         icon="copy"

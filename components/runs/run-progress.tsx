@@ -73,10 +73,18 @@ export function RunProgress({ collaboration, run, canStop, onChanged }: RunProgr
             }
             action={
               isHere && canStop ? (
-                <Button size="small" onClick={stop} isBusy={isStopping || job.cancelRequested}>
+                <Button
+                  size="small"
+                  className="min-w-[50px]"
+                  onClick={stop}
+                  isBusy={isStopping || job.cancelRequested}
+                >
                   {job.cancelRequested ? 'Stopping' : 'Stop'}
                 </Button>
-              ) : undefined
+              ) : (
+                // Keeps the columns of all stages under each other.
+                <span className="w-[50px]" />
+              )
             }
           />
         );
