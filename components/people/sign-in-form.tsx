@@ -38,7 +38,10 @@ export function SignInForm({ next }: { next: string }) {
       </Button>
       <p className="text-[14px] text-ink3">
         Invited by a collaboration? Open the link in the invitation. No account yet?{' '}
-        <Link href="/sign-up">Make one</Link>.
+        <Link className="underline underline-offset-3" href="/sign-up">
+          Make one
+        </Link>
+        .
       </p>
     </form>
   );

@@ -55,7 +55,11 @@ export function SignUpForm() {
         Make the account
       </Button>
       <p className="text-[14px] text-ink3">
-        Have one already? <Link href="/sign-in">Sign in</Link>.
+        Have one already?{' '}
+        <Link className="underline underline-offset-3" href="/sign-in">
+          Sign in
+        </Link>
+        .
       </p>
     </form>
   );

@@ -170,7 +170,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
             survey={survey}
             onChanged={() => void mutate()}
           />
-          <div className="mt-5 grid gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,1fr)_minmax(340px,390px)]">
+          <div className="mt-5 grid grid-cols-1 gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,1fr)_minmax(340px,390px)]">
             <Tabs
               label="Parts of the survey"
               tabs={[

@@ -16,6 +16,7 @@ const PAGE = 21;
 
 /** Columns that a narrow screen leaves to the panel of the chosen star. */
 const wide = 'max-md:hidden';
+const wider = 'max-lg:hidden';
 
 function MapMark({ target }: { target: TargetView }) {
   if (target.leftOutReason !== null) return <StateMark kind="stopped">left out</StateMark>;
@@ -75,8 +76,8 @@ function TargetLine({
           </ErrorTerm>
         )}
       </Cell>
-      <Cell className={`whitespace-nowrap ${wide}`}>{target.movingGroup ?? 'field'}</Cell>
-      <Cell className={wide}>
+      <Cell className={`whitespace-nowrap ${wider}`}>{target.movingGroup ?? 'field'}</Cell>
+      <Cell className={wider}>
         {curve && (
           <Sparkline
             width={68}
@@ -196,8 +197,8 @@ export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps)
             <HeadCell isNumeric className={wide}>
               age, Myr
             </HeadCell>
-            <HeadCell className={wide}>group</HeadCell>
-            <HeadCell className={wide}>curve</HeadCell>
+            <HeadCell className={wider}>group</HeadCell>
+            <HeadCell className={wider}>curve</HeadCell>
             <HeadCell colSpan={2}>
               <span className="max-md:hidden">detection probability</span>
               <span className="md:hidden">seen</span>

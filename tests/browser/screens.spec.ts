@@ -2,6 +2,9 @@ import AxeBuilder from '@axe-core/playwright';
 import { expect, type Page, test } from '@playwright/test';
 import { LAB, signIn, watchPage } from './demonstration';
 
+// A trace records every element of every chart at each step, which takes longer than the tests.
+test.use({ trace: 'off' });
+
 const outside = ['/sign-in', '/sign-up', '/join/no-such-invitation'];
 const inside = [
   LAB,
@@ -54,29 +57,25 @@ async function look(page: Page, address: string): Promise<void> {
   expect(faults).toEqual([]);
 }
 
-test.describe('screens', () => {
-  test.use({ trace: 'off' });
+for (const address of outside) {
+  test(`without a session: ${address}`, ({ page }) => look(page, address));
+}
 
-  for (const address of outside) {
-    test(`looks right without a session: ${address}`, ({ page }) => look(page, address));
-  }
+test.describe('of a collaboration', () => {
+  let storageState: Awaited<ReturnType<ReturnType<Page['context']>['storageState']>>;
 
-  test.describe('of a collaboration', () => {
-    let storageState: Awaited<ReturnType<ReturnType<Page['context']>['storageState']>>;
+  test.beforeAll(async ({ browser, baseURL }) => {
+    const context = await browser.newContext({ baseURL });
+    await signIn(await context.newPage(), 'owner');
+    storageState = await context.storageState();
+    await context.close();
+  });
 
-    test.beforeAll(async ({ browser, baseURL }) => {
-      const context = await browser.newContext({ baseURL });
-      await signIn(await context.newPage(), 'owner');
-      storageState = await context.storageState();
+  for (const address of inside) {
+    test(address, async ({ browser, baseURL }) => {
+      const context = await browser.newContext({ baseURL, storageState });
+      await look(await context.newPage(), address);
       await context.close();
     });
-
-    for (const address of inside) {
-      test(`looks right: ${address}`, async ({ browser, baseURL }) => {
-        const context = await browser.newContext({ baseURL, storageState });
-        await look(await context.newPage(), address);
-        await context.close();
-      });
-    }
-  });
+  }
 });
