@@ -19,7 +19,7 @@ export const lawNames: Record<PriorLaw, string> = {
   gamma: 'gamma',
 };
 
-/** The laws that a likelihood takes; `always` is offered too, as the saved prior's own law. */
+/** The laws that a likelihood takes. */
 export function priorLaws(likelihood: Likelihood): PriorLaw[] {
   return likelihood === 'host-fraction'
     ? ['uniform', 'jeffreys', 'log-uniform', 'beta']

@@ -67,7 +67,7 @@ async function send(
       title: 'No answer',
       status: 0,
       code: 'no-answer',
-      detail: 'No answer from the server. Nothing was changed; check the connection and try again.',
+      detail: 'No answer from the server. Check the connection and try again.',
     });
   }
   if (!response.ok) throw await readProblem(response);

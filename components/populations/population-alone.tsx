@@ -14,6 +14,11 @@ import { drawSeen, PLANETS } from './preview-figures';
 const margin = { left: 46, right: 16, top: 8, bottom: 46 };
 const height = 420;
 
+/** Server and browser differ in the last bit of a logarithm: what both write must not show it. */
+function toHundredth(px: number): number {
+  return Math.round(100 * px) / 100;
+}
+
 /** Planets drawn from a population while no maps exist that could say which of them are seen. */
 export function PopulationAlone({
   definition,
@@ -36,10 +41,10 @@ export function PopulationAlone({
   );
   const frame = mapFrame(empty, width, height, margin);
   const box = {
-    left: frame.x(definition.semiMajorAxisMinAu),
-    right: frame.x(definition.semiMajorAxisMaxAu),
-    top: frame.y(definition.massMaxMjup),
-    bottom: frame.y(definition.massMinMjup),
+    left: toHundredth(frame.x(definition.semiMajorAxisMinAu)),
+    right: toHundredth(frame.x(definition.semiMajorAxisMaxAu)),
+    top: toHundredth(frame.y(definition.massMaxMjup)),
+    bottom: toHundredth(frame.y(definition.massMinMjup)),
   };
   return (
     <section className="min-w-0">
@@ -71,8 +76,8 @@ export function PopulationAlone({
             // biome-ignore lint/suspicious/noArrayIndexKey: planet i is always the i-th draw
             key={i}
             className="planet-missed"
-            cx={frame.x(planets.semiMajorAxisAu[i])}
-            cy={frame.y(mass)}
+            cx={toHundredth(frame.x(planets.semiMajorAxisAu[i]))}
+            cy={toHundredth(frame.y(mass))}
             r="4"
           />
         ))}

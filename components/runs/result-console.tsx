@@ -5,6 +5,7 @@ import { NumberEntry } from '@/components/analyses/number-entry';
 import {
   fitPrior,
   likelihoodOptions,
+  type PriorLaw,
   priorLaws,
   priorOfLaw,
   priorOptions,
@@ -132,7 +133,7 @@ export function ResultConsole(props: ResultConsoleProps) {
                   prior: priorOfLaw(law, setting.likelihood, setting.prior),
                 })
               }
-              options={withConsequences(priorOptions(laws), (value) =>
+              options={withConsequences(priorOptions(laws).map(shortened), (value) =>
                 consequence(consequences?.switches.prior[value]),
               )}
             />
@@ -255,6 +256,19 @@ function FloorEntry({
       onValue={(min) => onSetting({ ...setting, prior: { ...prior, min } })}
     />
   );
+}
+
+/** Four options with their limits share 346 px: the longest name is cut for the eye alone. */
+function shortened(option: SwitchOption<PriorLaw>): SwitchOption<PriorLaw> {
+  if (option.value !== 'log-uniform') return option;
+  return {
+    ...option,
+    label: (
+      <>
+        log<span className="max-md:sr-only">-uniform</span>
+      </>
+    ),
+  };
 }
 
 /** The axis of a control is the map's own, unless the range reaches past it. */
