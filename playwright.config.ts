@@ -9,11 +9,12 @@ export default defineConfig({
   outputDir: 'test-results',
   workers: 1,
   forbidOnly: true,
-  timeout: 90_000,
-  expect: { timeout: 15_000 },
+  timeout: 180_000,
+  expect: { timeout: 30_000 },
   use: {
     baseURL,
-    trace: 'retain-on-failure',
+    // A trace keeps every element of every chart at each step and takes longer than the tests.
+    trace: 'off',
     screenshot: 'only-on-failure',
     launchOptions: {
       executablePath: '/usr/bin/chromium',

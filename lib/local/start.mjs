@@ -84,7 +84,7 @@ function announce(product) {
   say('\nRarebound is running\n');
   say(`  Address  ${product.address}`);
   if (product.mail.mailboxUrl) say(`  Mailbox  ${product.mail.mailboxUrl}`);
-  say(`  Logs     ${path.relative(root, path.join(folder, 'logs')) || '.'}`);
+  say(`  Logs     ${path.join(folder, 'logs').replace(`${root}/`, '')}`);
   const signIns = isDemoWanted ? readDemoSignIns(folder) : [];
   if (signIns.length > 0) say('\n  Demo sign-ins');
   const roleWidth = Math.max(0, ...signIns.map(({ role }) => role.length));
