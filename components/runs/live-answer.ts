@@ -39,7 +39,8 @@ export interface LiveAnswer {
   answer: LimitAnswer;
   /** The same sample with every detection set aside. */
   zero: LimitAnswer;
-  levels: RunResult['levels'];
+  /** Two more posteriors: made when the table asks for them, and then kept. */
+  levels(): RunResult['levels'];
   /** Log-uniform prior: the limit at a tenth of its floor. */
   atTenthOfFloor: number | null;
 }
@@ -74,7 +75,7 @@ export function liveAnswer(
     full,
     answer: sumUp(full, top),
     zero: sumUp(none, top),
-    levels: tableOfLevels(view, asked, full, none),
+    levels: once(() => tableOfLevels(view, asked, full, none)),
     atTenthOfFloor: limitAtLowerFloor(
       {
         likelihood: asked.likelihood,
@@ -154,6 +155,14 @@ function tableOfLevels(
     hostFractionZero: isFraction ? ownZero[row] : theirsZero[row],
     meanNumberZero: isFraction ? theirsZero[row] : ownZero[row],
   }));
+}
+
+function once<T>(make: () => T): () => T {
+  let made: { value: T } | undefined;
+  return () => {
+    made ??= { value: make() };
+    return made.value;
+  };
 }
 
 /** The answer, or null where the question has none. */

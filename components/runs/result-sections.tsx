@@ -34,7 +34,7 @@ interface ResultSectionsProps {
  */
 export const ResultSections = memo(function ResultSections(props: ResultSectionsProps) {
   const { inputs, result, runNumber, sample, shown, map, depth, definition } = props;
-  const { quantity, levels, setting } = shown;
+  const { quantity, setting } = shown;
   const ofRun = shown.isLive ? runNumber : undefined;
   return (
     <>
@@ -51,7 +51,7 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
         <div className="grid min-w-0 content-start md:gap-y-8">
           <FoldSection number={3} title="Limits by credible level" answer={levelsInWords(shown)}>
             <LevelTable
-              levels={levels}
+              levels={shown.levels()}
               credibleLevel={setting.credibleLevel}
               quantity={quantity}
               detections={shown.counted.length}
@@ -90,9 +90,10 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
 });
 
 function levelsInWords({ levels, quantity }: ShownResult): string {
+  const rows = levels();
   return [0.9, 0.99]
     .flatMap((level) => {
-      const row = levels.find((one) => Math.abs(one.level - level) < 1e-9);
+      const row = rows.find((one) => Math.abs(one.level - level) < 1e-9);
       const limit = quantity === 'host_fraction' ? row?.hostFraction : row?.meanNumber;
       return row ? [`${percentBelow(limit ?? null)}\u2009% at ${describeLevel(level)}`] : [];
     })

@@ -12,7 +12,7 @@ export interface ShownResult {
   quantity: RateQuantity;
   answer: LimitAnswer;
   zero: LimitAnswer;
-  levels: RunResult['levels'];
+  levels(): RunResult['levels'];
   atTenthOfFloor: number | null;
   counted: { name: string; starId: string }[];
   /** Names of confirmed companions outside the ranges, and of second ones of a star. */
@@ -45,7 +45,7 @@ export function showResult(
       quantity: saved.quantity,
       answer: saved.answer,
       zero: savedAnswer(result.zero),
-      levels: result.levels,
+      levels: () => result.levels,
       atTenthOfFloor: result.atTenthOfFloor,
       counted: result.counted,
       outside: result.outside.map(({ name }) => name),

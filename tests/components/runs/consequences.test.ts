@@ -76,13 +76,13 @@ describe('liveAnswer', () => {
   });
 
   it('puts an unusual level among the rows of the table', () => {
-    const { levels } = liveAnswer(sample, view, { ...setting, credibleLevel: 0.8 });
+    const levels = liveAnswer(sample, view, { ...setting, credibleLevel: 0.8 }).levels();
     expect(levels.map(({ level }) => level)).toEqual([0.68, 0.8, 0.9, 0.95, 0.99, 0.997]);
   });
 
   it('has no counterpart of a beta prior for the mean number', () => {
     const prior = { law: 'beta', a: 1, b: 2 } as const;
-    const { levels } = liveAnswer(sample, view, { ...setting, prior });
+    const levels = liveAnswer(sample, view, { ...setting, prior }).levels();
     expect(levels.every(({ meanNumber }) => meanNumber === null)).toBe(true);
     expect(levels.every(({ hostFraction }) => hostFraction !== null)).toBe(true);
   });
