@@ -1,0 +1,95 @@
+import { cpus } from 'node:os';
+import { parseArgs } from 'node:util';
+import { ENGINE_VERSION } from '@/lib/sensitivity';
+import project from '@/package.json';
+import { type Amount, FULL, QUICK } from './amount';
+import { liveLines } from './live';
+import { mapLines } from './maps';
+import { posteriorLines } from './posterior';
+import { type Line, linesWithVerdicts, printTable } from './report';
+import { keptSum } from './rounds';
+import { SEED } from './survey';
+import { wireLines } from './wire';
+
+/** Maps come first: their first pass has to be the first of the process. */
+const groups: Record<string, (amount: Amount) => Line[]> = {
+  maps: mapLines,
+  posterior: posteriorLines,
+  live: liveLines,
+  wire: wireLines,
+};
+
+const NOTES = [
+  'Times: processor time of this process. Ratio: yardstick over product, round by round, median',
+  '(min to max); for live the share of a frame, for wire the bytes.',
+  'Errors of maps: four stars against a reference of this run with many ages and distances, summed',
+  'over separation; mean is the mean completeness under the population. Limit: relative error.',
+  'The yardsticks run in this process: targets set against other programs are held against them.',
+  'Targets of all maps: those of a grid of 100 by 100 coded as differences of neighbours.',
+  'A run sends all its maps as uint16, without compression; no address sends the mean map alone.',
+  'Not measured here: cold processes, two workers, free posterior, calibration, reading from the',
+  'database.',
+];
+
+const USAGE = `Usage: npm run bench -- [--quick] [--json] [--only ${Object.keys(groups).join('|')}]`;
+
+function readArguments() {
+  const { values } = parseArgs({
+    options: {
+      quick: { type: 'boolean', default: false },
+      json: { type: 'boolean', default: false },
+      only: { type: 'string', multiple: true },
+    },
+  });
+  const unknown = values.only?.find((name) => !(name in groups));
+  if (unknown !== undefined) throw new TypeError(`there is no part named ${unknown}`);
+  return { ...values, only: values.only ?? Object.keys(groups) };
+}
+
+function describeMachine() {
+  const [first] = cpus();
+  const { node, v8 } = process.versions;
+  return {
+    rarebound: project.version,
+    engine: ENGINE_VERSION,
+    node,
+    v8,
+    system: `${process.platform} ${process.arch}`,
+    processors: `${cpus().length} × ${first?.model ?? 'unknown'}`,
+  };
+}
+
+function measure({ quick, json, only }: ReturnType<typeof readArguments>): void {
+  const amount = quick ? QUICK : FULL;
+  const start = performance.now();
+  const lines = Object.keys(groups).flatMap((name) => {
+    if (!only.includes(name)) return [];
+    process.stderr.write(`Measuring ${name}…\n`);
+    return groups[name](amount);
+  });
+  const seconds = Math.round((performance.now() - start) / 1000);
+  const versions = describeMachine();
+  if (json) {
+    const { rounds } = amount;
+    const seeds = { survey: SEED };
+    const report = { versions, seeds, rounds, quick, seconds, lines: linesWithVerdicts(lines) };
+    process.stdout.write(`${JSON.stringify(report, null, 2)}\n`);
+  } else {
+    const about = Object.entries(versions).map(([what, version]) => `${what} ${version}`);
+    process.stdout.write(
+      `${printTable(lines)}\n\n${NOTES.join('\n')}\n\n` +
+        `${about.join(', ')}; seed '${SEED}'; ${amount.rounds} rounds; ${seconds} s\n`,
+    );
+  }
+  if (!Number.isFinite(keptSum())) throw new RangeError('a measured result is not a number');
+}
+
+let chosen: ReturnType<typeof readArguments> | null = null;
+try {
+  chosen = readArguments();
+} catch (reason) {
+  if (!(reason instanceof TypeError)) throw reason;
+  process.stderr.write(`${reason.message}\n${USAGE}\n`);
+  process.exitCode = 2;
+}
+if (chosen) measure(chosen);
