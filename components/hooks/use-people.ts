@@ -61,6 +61,13 @@ export function invite(collaboration: string, email: string, roles: Role[]) {
   });
 }
 
+/** A new code by mail; the old one opens nothing any more. */
+export function resendInvitation(collaboration: string, id: string) {
+  return request(apiPath(collaboration, 'invitations', id, 'resend'), z.unknown(), {
+    method: 'POST',
+  });
+}
+
 export function revokeInvitation(collaboration: string, id: string) {
   return requestNothing(apiPath(collaboration, 'invitations', id), { method: 'DELETE' });
 }

@@ -2,7 +2,12 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { invite, revokeInvitation, useInvitations } from '@/components/hooks/use-people';
+import {
+  invite,
+  resendInvitation,
+  revokeInvitation,
+  useInvitations,
+} from '@/components/hooks/use-people';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
@@ -106,6 +111,19 @@ export function InvitationPanel({ collaboration, initial, offered }: InvitationP
                     : invitation.state}
                 </Cell>
                 <Cell>
+                  {offered.length > 0 && ['pending', 'expired'].includes(invitation.state) && (
+                    <TextAction
+                      onClick={() =>
+                        void attempt(
+                          () => resendInvitation(collaboration, invitation.id),
+                          invitation.email,
+                        )
+                      }
+                    >
+                      Send again
+                      <span className="sr-only"> the invitation of {invitation.email}</span>
+                    </TextAction>
+                  )}{' '}
                   {invitation.state === 'pending' && offered.length > 0 && (
                     <TextAction
                       onClick={() =>
