@@ -1,9 +1,9 @@
 import { PosteriorChart } from '@/components/charts/posterior-chart';
-import { type RateCurve, rateAxisMax } from '@/components/charts/rate-curve';
+import { rateAxisMax } from '@/components/charts/rate-curve';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
 import { savedAnswer } from '@/components/runs/live-answer';
-import { cutAt } from '@/components/runs/posterior-data';
+import { reachTo } from '@/components/runs/posterior-data';
 import { Plate, StatementNumber } from '@/components/ui/plate';
 import { describeLevel } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
@@ -35,14 +35,14 @@ export function ComparePlate({
       <PosteriorChart
         name="A"
         label={detectionWords(a)}
-        curve={reach(first.curve, largest)}
+        curve={reachTo(first.curve, largest)}
         limit={first.limit}
         credibleLevel={a.result.credibleLevel}
         quantity={a.result.quantity}
         second={{
           name: 'B',
           label: detectionWords(b),
-          curve: reach(second.curve, largest),
+          curve: reachTo(second.curve, largest),
           limit: second.limit,
         }}
       />
@@ -104,17 +104,4 @@ function bothWords(same: ComparedInput[]): string {
   return words.length === 0
     ? 'The two share neither level, prior nor sample.'
     : `Both: ${words.join('; ')}.`;
-}
-
-/** A curve on the common axis: cut there, or carried on where nothing is left of it. */
-function reach(curve: RateCurve, top: number): RateCurve {
-  const cut = cutAt(curve, top);
-  const last = cut.rate.length - 1;
-  if (cut.rate[last] >= top * 0.999) return cut;
-  const append = (values: Float64Array, value: number) => Float64Array.from([...values, value]);
-  return {
-    rate: append(cut.rate, top),
-    density: append(cut.density, 0),
-    cumulative: append(cut.cumulative, 1),
-  };
 }

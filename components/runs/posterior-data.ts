@@ -16,12 +16,15 @@ interface PosteriorInputs {
 /** What the plate draws: the posterior, its prior, and what it is compared with. */
 export function posteriorData(inputs: PosteriorInputs): PosteriorData {
   const { setting, quantity, answer, zero, saved } = inputs;
+  const largest = quantity === 'host_fraction' ? 1 : Number.POSITIVE_INFINITY;
   const top = rateAxisMax(
     [answer, zero, saved].flatMap((one) => (one === undefined ? [] : [one.limit])),
-    answer.curve.rate[answer.curve.rate.length - 1],
+    largest,
   );
-  const shown = cutAt(answer.curve, top);
-  const density = answer.prior.subarray(0, shown.rate.length);
+  const shown = reachTo(answer.curve, top);
+  const density = shown.rate.map((rate, point) =>
+    rate > priorEnd(setting.prior) ? 0 : answer.prior[Math.min(point, answer.prior.length - 1)],
+  );
   return {
     curve: shown,
     limit: answer.limit,
@@ -37,22 +40,35 @@ export function posteriorData(inputs: PosteriorInputs): PosteriorData {
         ? undefined
         : {
             label: 'same run with zero detections',
-            curve: cutAt(zero.curve, top),
+            curve: reachTo(zero.curve, top),
             limit: zero.limit,
           },
-    saved: saved === undefined ? undefined : { curve: cutAt(saved.curve, top), limit: saved.limit },
+    saved:
+      saved === undefined ? undefined : { curve: reachTo(saved.curve, top), limit: saved.limit },
   };
 }
 
-/** The part of a curve up to a rate. */
-export function cutAt(curve: RateCurve, top: number): RateCurve {
+/** A curve on an axis of its own end: cut there, or carried on where nothing is left of it. */
+export function reachTo(curve: RateCurve, top: number): RateCurve {
   let end = curve.rate.findIndex((rate) => rate > top * (1 + 1e-9));
   if (end < 2) end = curve.rate.length;
-  return {
+  const cut = {
     rate: curve.rate.subarray(0, end),
     density: curve.density.subarray(0, end),
     cumulative: curve.cumulative.subarray(0, end),
   };
+  if (cut.rate[end - 1] >= 0.98 * top) return cut;
+  const append = (values: Float64Array, value: number) => Float64Array.from([...values, value]);
+  return {
+    rate: append(cut.rate, top),
+    density: append(cut.density, 0),
+    cumulative: append(cut.cumulative, 1),
+  };
+}
+
+/** Largest rate that a prior allows. */
+function priorEnd(prior: LiveSetting['prior']): number {
+  return 'max' in prior && prior.max !== undefined ? prior.max : Number.POSITIVE_INFINITY;
 }
 
 /** Short enough to stand on the line: "uniform in f from 0 to 1". */
