@@ -16,7 +16,7 @@ export const FULL: Amount = {
     hard: { ageNodesPerSide: 80, distanceNodes: 81 },
   },
   smoothMaps: [12, 78, 400, 5000],
-  hardMaps: [12, 78, 400],
+  hardMaps: [12, 78],
 };
 
 export const QUICK: Amount = {
