@@ -29,6 +29,8 @@ export const mapSettingsSchema = z.strictObject({
     .default({ kind: 'built-in' }),
   massOutsideTable: z.enum(['undetectable', 'edge']).default('undetectable'),
   ageOutsideTable: z.enum(['refuse', 'edge']).default('refuse'),
+  /** Age nodes on each side of the median: more for stars with wide ages; 5 (smooth) or 10 (hard) if absent. */
+  ageNodesPerSide: z.number().int().min(5).max(80).optional(),
   massMjup: axisRangeSchema.default({ min: 0.5, max: 80, count: 56 }),
   semiMajorAxisAu: axisRangeSchema.default({ min: 1, max: 1000, count: 64 }),
 });

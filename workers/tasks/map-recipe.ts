@@ -77,10 +77,16 @@ export async function loadRecipe(
   settings: MapSettings,
   transaction?: Transaction,
 ): Promise<MapRecipe> {
-  const { eccentricity, threshold, massOutsideTable, ageOutsideTable } = settings;
+  const { eccentricity, threshold, massOutsideTable, ageOutsideTable, ageNodesPerSide } = settings;
   return {
     grid: gridOf(settings),
-    settings: { eccentricity, threshold, massOutsideTable, ageOutsideTable },
+    settings: {
+      eccentricity,
+      threshold,
+      massOutsideTable,
+      ageOutsideTable,
+      ...(ageNodesPerSide === undefined ? {} : { ageNodesPerSide }),
+    },
     ...(await loadCooling(collaborationId, settings, transaction)),
   };
 }
