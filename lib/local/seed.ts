@@ -185,7 +185,7 @@ async function seed(): Promise<void> {
     const ids: Record<string, string> = {};
     for (const survey of demoSurveys)
       ids[survey.slug] = await importSurvey(actorOf(survey.lead), survey, stars);
-    await askQuestions({
+    const { leadAnalysisId } = await askQuestions({
       actors: { statistician: actorOf('linhart'), student: actorOf('hadley') },
       surveyIds: ids as never,
       finish: finishJob,
@@ -198,7 +198,7 @@ async function seed(): Promise<void> {
     await writeSecret('demo-token', `${token}\n`);
     await writeSecret('demo-sign-ins.json', `${JSON.stringify(signIns, null, 2)}\n`);
     await CollaborationRow.update(
-      { settings: { isDemonstrationReady: true } },
+      { settings: { isDemonstrationReady: true, leadAnalysisId } },
       { where: { slug: SLUG } },
     );
     const { stars: count, entries } = await listSurveys(actorOf('marrand'));

@@ -39,7 +39,11 @@ export interface DemoAnalyses {
  * Asks the demonstration's questions. The lead analysis is run once for each survey that joined, so
  * that its history is a history; every number comes from the engine.
  */
-export async function askQuestions({ actors, surveyIds, finish }: DemoAnalyses): Promise<void> {
+export async function askQuestions({
+  actors,
+  surveyIds,
+  finish,
+}: DemoAnalyses): Promise<{ leadAnalysisId: string }> {
   const { statistician, student } = actors;
   const { sandbar, halyard, petrel, curlew } = surveyIds;
   const uniform: RatePriorInput = { law: 'uniform', max: 1 };
@@ -89,8 +93,7 @@ export async function askQuestions({ actors, surveyIds, finish }: DemoAnalyses):
   });
   for (const [step, ids] of sets.entries()) {
     if (step > 0) await updateAnalysis(statistician, lead.key, { recipe: recipe(single, ids) });
-    // The last run comes at the end: until an owner chooses, the newest run leads the overview.
-    if (step < sets.length - 1) await run(statistician, lead.key);
+    await run(statistician, lead.key);
   }
   const zero = await copyAnalysis(student, lead.key, {
     name: 'The same with zero detections',
@@ -115,5 +118,5 @@ export async function askQuestions({ actors, surveyIds, finish }: DemoAnalyses):
     const made = await createAnalysis(statistician, other);
     await run(statistician, made.key);
   }
-  await run(statistician, lead.key);
+  return { leadAnalysisId: lead.id };
 }
