@@ -91,6 +91,14 @@ async function cleanUp() {
   if (database?.started) await stopTestDatabase();
 }
 
+async function countSteps(/** @type {string[]} */ names) {
+  const counts = [];
+  for (const name of Object.keys(steps)) {
+    if (names.length === 0 || names.includes(name)) counts.push(await runStep(name));
+  }
+  return counts;
+}
+
 async function runSteps(/** @type {string[]} */ names) {
   const unknown = names.filter((name) => !(name in steps));
   if (unknown.length > 0) {
@@ -104,16 +112,17 @@ async function runSteps(/** @type {string[]} */ names) {
     throw new LauncherProblem(`The tests are already running here, as process ${lock.heldBy}.`);
   }
   mkdirSync(reports, { recursive: true });
-  for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
-    process.once(signal, async () => {
-      endRunning();
-      await cleanUp();
-      process.exit(130);
-    });
-  }
-  const counts = [];
-  for (const name of Object.keys(steps)) {
-    if (names.length === 0 || names.includes(name)) counts.push(await runStep(name));
+  const interrupted = new Promise((resolve) => {
+    for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
+      process.on(signal, () => resolve(signal));
+    }
+  });
+  const counts = await Promise.race([countSteps(names), interrupted]);
+  if (typeof counts === 'string') {
+    say(`\nStopped by ${counts}`);
+    endRunning();
+    await cleanUp();
+    return 130;
   }
   await cleanUp();
   const { passed, failed } = addCounts(counts);
