@@ -9,6 +9,6 @@ import { request } from './request';
 export function useOverview(collaboration: string, fallback: Overview) {
   return useSWR(apiPath(collaboration, 'overview'), (path) => request(path, overviewSchema), {
     fallbackData: fallback,
-    refreshInterval: (overview) => (overview && overview.jobs.length > 0 ? 2000 : 30_000),
+    refreshInterval: (overview = fallback) => (overview.jobs.length > 0 ? 2000 : 30_000),
   });
 }

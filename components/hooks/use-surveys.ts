@@ -29,7 +29,7 @@ const isComputing = (survey: SurveyView | undefined) =>
 export function useSurveys(collaboration: string, fallback: SurveyList) {
   return useSWR(apiPath(collaboration, 'surveys'), (path) => request(path, surveyListSchema), {
     fallbackData: fallback,
-    refreshInterval: (list) => (list?.surveys.some(isComputing) ? POLL_MS : 0),
+    refreshInterval: (list = fallback) => (list.surveys.some(isComputing) ? POLL_MS : 0),
   });
 }
 
@@ -37,7 +37,7 @@ export function useSurveys(collaboration: string, fallback: SurveyList) {
 export function useSurvey(collaboration: string, slug: string, fallback: SurveyView) {
   return useSWR(apiPath(collaboration, 'surveys', slug), (path) => request(path, surveySchema), {
     fallbackData: fallback,
-    refreshInterval: (survey) => (isComputing(survey) ? POLL_MS : 0),
+    refreshInterval: (survey = fallback) => (isComputing(survey) ? POLL_MS : 0),
   });
 }
 

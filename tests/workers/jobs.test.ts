@@ -129,7 +129,8 @@ describe('stopping and starting again', () => {
     expect(states.map(({ state }) => state)).toEqual(['none', 'ready']);
     await expect(cancelJob(actor, jobId)).rejects.toThrow('ended already');
 
-    expect((await retryJob(actor, jobId)).status).toBe('waiting');
+    // An idle worker may have taken it before the answer is made.
+    expect(['waiting', 'running']).toContain((await retryJob(actor, jobId)).status);
     expect((await untilEnded(jobId)).status).toBe('done');
     const [{ count }] = await query<{ count: number }>(
       'select count(*)::int from completeness_map where collaboration_id = $1',
