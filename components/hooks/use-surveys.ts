@@ -41,17 +41,21 @@ export function useSurvey(collaboration: string, slug: string, fallback: SurveyV
   });
 }
 
-/** Every target of a survey, page after page; refreshed while maps arrive. */
+/**
+ * Every target of a survey, page after page; refreshed while maps arrive.
+ *
+ * @param follow `stamp` changes with the survey's counts: the targets are then asked for once more,
+ *   since the last maps may arrive between two looks
+ */
 export function useTargets(
   collaboration: string,
   slug: string,
   fallback: TargetList,
-  isLive: boolean,
+  follow: { isLive: boolean; stamp: string },
 ) {
-  const path = apiPath(collaboration, 'surveys', slug, 'targets');
   return useSWR(
-    path,
-    async () => {
+    [apiPath(collaboration, 'surveys', slug, 'targets'), follow.stamp],
+    async ([path]) => {
       const targets: TargetView[] = [];
       for (;;) {
         const page = await request(
@@ -64,7 +68,12 @@ export function useTargets(
         }
       }
     },
-    { fallbackData: fallback, refreshInterval: isLive ? 2 * POLL_MS : 0, revalidateOnFocus: false },
+    {
+      fallbackData: fallback,
+      keepPreviousData: true,
+      refreshInterval: follow.isLive ? 2 * POLL_MS : 0,
+      revalidateOnFocus: false,
+    },
   );
 }
 

@@ -1,7 +1,7 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useEffect, useRef, useState } from 'react';
+import { useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
@@ -70,13 +70,8 @@ export function SurveyScreen(props: SurveyScreenProps) {
     collaboration,
     survey.slug,
     props.targets,
-    isOpen,
+    { isLive: isOpen, stamp: `${survey.maps.ready}-${survey.maps.failed}` },
   );
-  const { ready, failed } = survey.maps;
-  // The last maps may arrive between two looks: each change of the counts asks for the targets again.
-  useEffect(() => {
-    void mutateTargets();
-  }, [ready, failed, isOpen]);
   const { data: companions = props.companions } = useCompanions(
     collaboration,
     survey.slug,
