@@ -13,6 +13,13 @@ export const ratePriorSchema = z.discriminatedUnion('law', [
   z.strictObject({ law: z.literal('jeffreys'), max: positiveSchema.max(1000).optional() }),
   z.strictObject({ law: z.literal('gamma'), shape: positiveSchema, rate: z.number().min(0) }),
   z.strictObject({ law: z.literal('beta'), a: positiveSchema, b: positiveSchema }),
+  /** An earlier survey's posterior as this one's prior: density at values, straight between them. */
+  z.strictObject({
+    law: z.literal('tabulated'),
+    value: z.array(z.number().min(0)).min(2).max(2000),
+    density: z.array(z.number().min(0)).min(2).max(2000),
+    source: lineSchema(200),
+  }),
 ]);
 export type RatePriorInput = z.infer<typeof ratePriorSchema>;
 export const likelihoodSchema = z.enum(['mean-number', 'host-fraction']);
@@ -33,12 +40,39 @@ export const analysisRecipeSchema = z
       .default('default'),
     /** A box that reaches past the maps: completeness is zero there only if a person says so. */
     zeroOutsideMaps: z.boolean().default(false),
+    /** Candidates that nobody settled: set aside when absent, else counted with their probability. */
+    candidates: z
+      .discriminatedUnion('treatment', [
+        z.strictObject({ treatment: z.literal('fixed') }),
+        z.strictObject({
+          treatment: z.literal('rate-dependent'),
+          referenceRate: positiveSchema.max(1000),
+        }),
+      ])
+      .optional(),
+    /** Expected number of false detections among those counted; mean number only. */
+    background: positiveSchema.max(1000).optional(),
   })
   .superRefine((recipe, context) => {
     const { prior, likelihood } = recipe;
     const refuse = (path: string, message: string) =>
       context.addIssue({ code: 'custom', path: ['prior', path], message });
     if (prior.law === 'log-uniform' && prior.min >= prior.max) refuse('min', 'min below max');
+    if (prior.law === 'tabulated') {
+      if (prior.value.length !== prior.density.length)
+        refuse('density', 'one density for each value');
+      if (prior.value.some((value, i) => i > 0 && value <= prior.value[i - 1]))
+        refuse('value', 'increasing values');
+      if (prior.density.every((density) => density === 0)) refuse('density', 'one above zero');
+      if (likelihood === 'host-fraction' && prior.value[prior.value.length - 1] > 1)
+        refuse('value', 'at most 1 for a fraction of stars');
+    }
+    if (recipe.background !== undefined && likelihood === 'host-fraction')
+      context.addIssue({
+        code: 'custom',
+        path: ['background'],
+        message: 'a known background belongs to the mean number',
+      });
     if (likelihood === 'host-fraction') {
       if ('max' in prior && prior.max !== undefined && prior.max > 1)
         refuse('max', 'at most 1 for a fraction of stars');

@@ -69,6 +69,10 @@ export const runInputsSchema = z.object({
       star: z.string(),
       status: z.string(),
       insideRanges: z.boolean().nullable(),
+      starId: idSchema.optional(),
+      probability: z.number().nullable().optional(),
+      massMjup: z.number().nullable().optional(),
+      semiMajorAxisAu: z.number().nullable().optional(),
     }),
   ),
   leftOut: z.array(z.object({ name: z.string(), survey: z.string(), reason: z.string() })),
@@ -112,6 +116,35 @@ export const runResultSchema = z.object({
       meanNumberZero: z.number().nullable(),
     }),
   ),
+  /** Frequentist limits and intervals of the same data, and how they differ from the credible ones. */
+  beside: z
+    .object({
+      rows: z.array(
+        z.object({
+          name: z.string(),
+          lower: z.number().nullable(),
+          upper: z.number(),
+          level: z.number(),
+          isApproximate: z.boolean(),
+          source: z.string(),
+        }),
+      ),
+      sentence: z.string(),
+    })
+    .nullable()
+    .default(null),
+  /** Unsettled candidates that count with their probability. */
+  candidates: z
+    .object({
+      treatment: z.enum(['fixed', 'rate-dependent']),
+      referenceRate: z.number().nullable(),
+      entries: z.array(z.object({ name: z.string(), star: z.string(), probability: z.number() })),
+    })
+    .nullable()
+    .default(null),
+  background: z.number().nullable().default(null),
+  /** Where host-mass scaling cut the prior of a fraction. */
+  priorCutAt: z.number().nullable().default(null),
   shareOutsideMaps: z.number(),
   shareFlaggedCooling: z.number(),
   /** Rows of mass, columns of semi-major axis; average over the stars. */
