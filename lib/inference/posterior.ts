@@ -8,7 +8,8 @@ import { fromOne, fromZero, type LogDensity, logarithmic, placeAt } from './stre
 /** Below this many expected detections at the largest rate the data say nothing. */
 const NOTHING_OBSERVABLE = 1e-9;
 
-const NO_DATA: RateLikelihood = {
+/** What says nothing of the rate. */
+export const NO_DATA: RateLikelihood = {
   powerOfRate: 0,
   powerOfComplement: 0,
   logRegular: () => 0,
@@ -16,13 +17,14 @@ const NO_DATA: RateLikelihood = {
 };
 
 /** Prior times likelihood: the two powers put together, and the rest. */
-interface Product {
+export interface Product {
   exponentAtZero: number;
   exponentAtOne: number;
   logDensity: LogDensity;
 }
 
-function multiply(prior: PriorLaw, likelihood: RateLikelihood): Product {
+/** Puts the powers of prior and likelihood together. */
+export function multiply(prior: PriorLaw, likelihood: RateLikelihood): Product {
   const exponentAtZero = prior.exponentAtZero + likelihood.powerOfRate;
   const exponentAtOne = prior.exponentAtOne + likelihood.powerOfComplement;
   return {
@@ -88,7 +90,12 @@ function effectiveEnd(exponent: number, decay: number): number {
   return (exponent + 10 * Math.sqrt(exponent) + 60) / decay;
 }
 
-function stretchesOf(prior: PriorLaw, likelihood: RateLikelihood): Stretch[] {
+/**
+ * Prior times likelihood on pieces of the support in which it is smooth.
+ *
+ * @throws RangeError for a prior without an upper end where the data give none either
+ */
+export function stretchesOf(prior: PriorLaw, likelihood: RateLikelihood): Stretch[] {
   const [low, top] = prior.support;
   const { exponentAtZero, exponentAtOne, logDensity } = multiply(prior, likelihood);
   if (low > 0) return [logarithmic(low, top, logDensity)];
@@ -100,7 +107,8 @@ function stretchesOf(prior: PriorLaw, likelihood: RateLikelihood): Stretch[] {
   return [fromZero(0.5, exponentAtZero, logDensity), fromOne(0.5, exponentAtOne, logDensity)];
 }
 
-function logPriorNorm(prior: PriorLaw): number {
+/** ln of the integral of a prior's own form; NaN where it has none. */
+export function logPriorNorm(prior: PriorLaw): number {
   if (prior.logNorm === null) return Number.NaN;
   if (prior.logNorm !== 'numerical') return prior.logNorm;
   return integrateDensity(stretchesOf(prior, NO_DATA)).logMass;
