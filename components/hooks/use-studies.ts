@@ -1,0 +1,65 @@
+'use client';
+
+import useSWR from 'swr';
+import { z } from 'zod';
+import type { JobView } from '@/lib/schemas/jobs';
+import { type StudySummary, studySchema, studySummarySchema } from '@/lib/schemas/studies';
+import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { apiPath, withQuery } from './api-path';
+import { request, requestNothing } from './request';
+
+export const studyListSchema = z.object({ studies: z.array(studySummarySchema) });
+
+const POLL_MS = 1000;
+
+const isOpen = ({ status }: JobView) => status === 'waiting' || status === 'running';
+const pollWhileOpen = (studies: StudySummary[] | undefined) =>
+  studies?.some(({ job }) => isOpen(job)) ? POLL_MS : 0;
+
+async function fetchStudies(path: string): Promise<StudySummary[]> {
+  return (await request(path, studyListSchema)).studies;
+}
+
+/** Questions asked of a run, newest first; asked for every second while one is on its way. */
+export function useRunStudies(collaboration: string, runId: string | undefined) {
+  return useSWR(
+    runId === undefined ? null : apiPath(collaboration, 'runs', runId, 'studies'),
+    fetchStudies,
+    { refreshInterval: pollWhileOpen },
+  );
+}
+
+/** Questions of one kind asked in the collaboration, newest first. */
+export function useStudiesOfKind(collaboration: string, kind: StudyKind) {
+  return useSWR(withQuery(apiPath(collaboration, 'studies'), { kind }), fetchStudies, {
+    refreshInterval: pollWhileOpen,
+  });
+}
+
+/** One question with its answer, which never changes once it is there. */
+export function useStudy(collaboration: string, id: string | undefined) {
+  return useSWR(
+    id === undefined ? null : apiPath(collaboration, 'studies', id),
+    (path) => request(path, studySchema),
+    {
+      refreshInterval: (study) => (study && isOpen(study.job) ? POLL_MS : 0),
+      revalidateOnFocus: false,
+    },
+  );
+}
+
+/** The same settings asked of the same run again answer the existing question. */
+export function askStudy(
+  collaboration: string,
+  runId: string,
+  settings: StudySettings,
+): Promise<StudySummary> {
+  return request(apiPath(collaboration, 'runs', runId, 'studies'), studySummarySchema, {
+    method: 'POST',
+    body: settings,
+  });
+}
+
+export function removeStudy(collaboration: string, id: string): Promise<void> {
+  return requestNothing(apiPath(collaboration, 'studies', id), { method: 'DELETE' });
+}
