@@ -1,11 +1,27 @@
 import { normalCumulative, normalQuantile } from '@/lib/numerics/normal';
 import { gaussLegendre } from '@/lib/numerics/quadrature';
-import type { AgeLaw, SensitivitySettings } from './types';
+import type { AgeLaw, AgeOfStar, SensitivitySettings } from './types';
 
 /** Values of an uncertain quantity with the weight of each; shape [n], weights sum to 1. */
 export interface WeightedNodes {
   values: Float64Array;
   weights: Float64Array;
+}
+
+/** The laws of an age with their probabilities; one law is certain. */
+export function ageParts(age: AgeOfStar): { probability: number; age: AgeLaw }[] {
+  if (!('mixture' in age)) return [{ probability: 1, age }];
+  let total = 0;
+  for (const { probability } of age.mixture) {
+    if (!(probability >= 0 && probability <= 1)) {
+      throw new RangeError(`probability of an age must be between 0 and 1, got ${probability}`);
+    }
+    total += probability;
+  }
+  if (!(Math.abs(total - 1) < 1e-9)) {
+    throw new RangeError(`probabilities of the ages must sum to 1, got ${total}`);
+  }
+  return age.mixture.filter(({ probability }) => probability > 0);
 }
 
 /** Nodes on each side of the median, by threshold: a sharp edge needs more (see the tests). */
@@ -15,6 +31,26 @@ const NODES_PER_SIDE = { smooth: 5, hard: 10 } as const;
 interface AgeQuantile {
   kink: number;
   quantile(p: number): number;
+}
+
+/**
+ * An age from a uniform number, [Myr]: the quantile function of each law on its own stretch of
+ * [0, 1], in the order of the mixture. One law gives its quantile function.
+ *
+ * @param age see AgeOfStar
+ * @returns function of a probability 0 to 1 to an age, [Myr]
+ * @throws RangeError for probabilities that do not sum to 1, or a law outside its domain
+ */
+export function ageDraw(age: AgeOfStar): (p: number) => number {
+  const parts = ageParts(age).map((part) => ({ ...part, quantile: ageQuantile(part.age) }));
+  return (p) => {
+    let from = 0;
+    for (const { probability, quantile } of parts) {
+      if (p < from + probability) return quantile((p - from) / probability);
+      from += probability;
+    }
+    return parts[parts.length - 1].quantile(1);
+  };
 }
 
 /**
@@ -34,19 +70,33 @@ export function ageQuantile(law: AgeLaw): (p: number) => number {
 
 /**
  * Age nodes of a star: K Gauss–Legendre nodes in probability on each side of the median, because
- * the law has a kink there that one rule across it would not follow.
+ * the law has a kink there that one rule across it would not follow. Each law of a mixture has its
+ * own nodes, weighted with its probability.
  *
- * @param law see AgeLaw
+ * @param age see AgeOfStar
  * @param threshold smooth K = 5, hard K = 10
  * @param nodesPerSide K, instead of the rule's own
- * @returns ages [Myr] increasing, weights that sum to 1; one node for an age without error
- * @throws RangeError for ages not positive or out of order, or half of a pair
+ * @returns ages [Myr], increasing within each law, weights that sum to 1; one node for an age
+ *   without error
+ * @throws RangeError for ages not positive or out of order, half of a pair, or probabilities that
+ *   do not sum to 1
  */
 export function ageNodes(
-  law: AgeLaw,
+  age: AgeOfStar,
   threshold: SensitivitySettings['threshold'],
   nodesPerSide: number = NODES_PER_SIDE[threshold],
 ): WeightedNodes {
+  if (!('mixture' in age)) return nodesOfLaw(age, nodesPerSide);
+  const parts = ageParts(age).map((part) => ({ ...part, ...nodesOfLaw(part.age, nodesPerSide) }));
+  return {
+    values: Float64Array.from(parts.flatMap(({ values }) => [...values])),
+    weights: Float64Array.from(
+      parts.flatMap(({ weights, probability }) => Array.from(weights, (w) => w * probability)),
+    ),
+  };
+}
+
+function nodesOfLaw(law: AgeLaw, nodesPerSide: number): WeightedNodes {
   const { kink, quantile } = preparedLaw(law);
   if (quantile(0.01) === quantile(0.99)) {
     return { values: Float64Array.of(law.medianMyr), weights: Float64Array.of(1) };

@@ -1,4 +1,4 @@
-export { ageNodes, ageQuantile, type WeightedNodes } from './age';
+export { ageDraw, ageNodes, ageParts, ageQuantile, type WeightedNodes } from './age';
 export {
   BUILT_IN_LAW_BANDS,
   BUILT_IN_LAW_NAME,
@@ -41,6 +41,7 @@ export { type CellMap, regridCells, regridNodes } from './regrid';
 export { simulateCompleteness } from './simulate';
 export type {
   AgeLaw,
+  AgeOfStar,
   CompletenessMap,
   ContrastCurve,
   CoolingRelation,
@@ -51,4 +52,6 @@ export type {
   MapGrid,
   SensitivitySettings,
   StarInputs,
+  StellarCompanion,
+  UnvettedCandidate,
 } from './types';

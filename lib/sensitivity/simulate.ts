@@ -1,7 +1,7 @@
 import { interpolateLinear } from '@/lib/numerics/interpolate';
 import { createRandom, deriveSeed } from '@/lib/numerics/random';
 import { distanceModulus } from '@/lib/quantities/magnitudes';
-import { ageQuantile } from './age';
+import { ageDraw } from './age';
 import { detectionProbability } from './contrast';
 import { coolNodes } from './cooling';
 import { distanceAt } from './distance';
@@ -90,8 +90,8 @@ function drawMagnitudes(
   seed: string,
 ): Float64Array[] {
   const { uniform } = createRandom(deriveSeed(seed, 'ages'));
-  const quantile = ageQuantile(star.age);
-  const ages = new Float64Array(draws).map(() => quantile(uniform()));
+  const ageAt = ageDraw(star.age);
+  const ages = new Float64Array(draws).map(() => ageAt(uniform()));
   const policy = { massOutsideTable: settings.massOutsideTable, ageOutsideTable: 'edge' } as const;
   return star.curves.map(
     (curve) => coolNodes(cooling, curve.band, mass, ages, policy, star.name).magnitudes,

@@ -55,16 +55,42 @@ export interface AgeLaw {
   maxMyr?: number;
 }
 
+/**
+ * Age of a star: one law, or several of which one is true, each with its probability (a member of a
+ * young group, else a star of the field). The probabilities sum to 1.
+ */
+export type AgeOfStar = AgeLaw | { mixture: { probability: number; age: AgeLaw }[] };
+
 export type DistanceLaw =
   | { distancePc: number; errorPc: number }
   | { parallaxMas: number; errorMas: number };
+
+/** The orbit of a star that is known to accompany the listed one. */
+export interface StellarCompanion {
+  /** Semi-major axis of the pair, [au], > 0. */
+  semiMajorAxisAu: number;
+  /** 0 <= e < 1. */
+  eccentricity: number;
+  /** Mass of the companion over that of the listed star, 0 < q <= 1. */
+  massRatio: number;
+}
+
+/** A source beside the star of which nobody knows whether it is bound. */
+export interface UnvettedCandidate {
+  /** [arcsec], > 0. */
+  separationArcsec: number;
+  /** How much fainter than the star it is, [mag]; absent when nobody measured it. */
+  contrastMag?: number;
+  /** Band of the contrast; absent when it holds for every curve of the star. */
+  band?: string;
+}
 
 export interface StarInputs {
   name: string;
   /** Apparent magnitude of the star in the curve's band, [mag]. */
   hostMag: number;
   hostMassMsun?: number;
-  age: AgeLaw;
+  age: AgeOfStar;
   distance: DistanceLaw;
   /** One curve, or several taken close enough in time that the companion did not move. */
   curves: ContrastCurve[];
@@ -72,6 +98,10 @@ export interface StarInputs {
   hostMags?: number[];
   /** Extinction in the band, [mag]; default 0. */
   extinctionMag?: number;
+  /** Used where the settings remove the unstable zone. */
+  stellarCompanion?: StellarCompanion;
+  /** Sources at which the sensitivity is cut, see cutAtCandidates. */
+  candidates?: { halfWidthArcsec: number; sources: UnvettedCandidate[] };
 }
 
 export interface SensitivitySettings {
@@ -82,6 +112,10 @@ export interface SensitivitySettings {
   ageOutsideTable: 'refuse' | 'edge';
   /** Age nodes on each side of the median; default 5 under the smooth threshold, 10 under the hard. */
   ageNodesPerSide?: number;
+  /** Raises the thresholds close to the star, see correctForSmallSamples; absent: as given. */
+  smallSample?: { fwhmArcsec: number };
+  /** Takes out axes on which a stellar companion lets nothing stay, see unstableZone; absent: kept. */
+  unstableZone?: 'remove';
 }
 
 /** Where a map rests on the edge of its cooling relation, or beyond it. */
@@ -94,4 +128,6 @@ export interface CoolingReport {
   lawNodesOutsideValidity: number;
   /** Indices of the mass nodes concerned, increasing. */
   flaggedMassNodes: number[];
+  /** Nodes set to 0 because a stellar companion lets nothing stay there; absent when none is known. */
+  nodesRemovedByStellarCompanion?: number;
 }

@@ -1,12 +1,7 @@
 import { intervalIndex } from '@/lib/numerics/grid';
 import { createRandom, deriveSeed } from '@/lib/numerics/random';
 import { distanceModulus } from '@/lib/quantities/magnitudes';
-import {
-  ageQuantile,
-  builtInMagnitude,
-  eccentricAnomaly,
-  type StarInputs,
-} from '@/lib/sensitivity';
+import { ageDraw, builtInMagnitude, eccentricAnomaly, type StarInputs } from '@/lib/sensitivity';
 import { eccentricityQuantile } from '@/lib/sensitivity/eccentricity';
 import { BAND, GRID, SEED, settings } from './survey';
 
@@ -56,7 +51,7 @@ export function monteCarloMap(
   const last = logSeparation.length - 1;
   const logAxis = GRID.semiMajorAxisAu.map(Math.log);
   const eccentricity = eccentricityQuantile(settings(threshold).eccentricity);
-  const ageOf = ageQuantile(star.age);
+  const ageOf = ageDraw(star.age);
   const [masses, columns] = [GRID.massMjup.length, logAxis.length];
   const counts = new Float64Array(masses * columns);
   const bodies = new Float64Array(masses);
