@@ -13,6 +13,7 @@ import type {
   SensitivitySettings,
   StarInputs,
 } from './types';
+import { removeUnstableNodes } from './unstable-zone';
 
 /** Changes whenever the same inputs would give other numbers, so that stored maps are not reused. */
 export const ENGINE_VERSION: string = '1';
@@ -66,13 +67,17 @@ export function computeCompletenessMap(
   for (let i = 0; i < completeness.length; i++) {
     completeness[i] = Math.min(1, Math.max(0, completeness[i]));
   }
+  const removed = removeUnstableNodes(completeness, grid, star, settings);
   return {
     map: {
       massMjup: Float64Array.from(grid.massMjup),
       semiMajorAxisAu: Float64Array.from(grid.semiMajorAxisAu),
       completeness,
     },
-    report: prepared.report,
+    report: {
+      ...prepared.report,
+      ...(removed !== null && { nodesRemovedByStellarCompanion: removed }),
+    },
   };
 }
 

@@ -10,6 +10,7 @@ export {
   isInsideLawValidity,
   planckRadiance,
 } from './built-in-law';
+export { cutAtCandidates, cutCurveAt } from './candidate-cut';
 export {
   type CombinationRule,
   combinationBounds,
@@ -39,6 +40,7 @@ export {
 } from './orbits';
 export { type CellMap, regridCells, regridNodes } from './regrid';
 export { simulateCompleteness } from './simulate';
+export { correctForSmallSamples, smallSampleThreshold } from './small-sample';
 export type {
   AgeLaw,
   AgeOfStar,
@@ -55,3 +57,5 @@ export type {
   StellarCompanion,
   UnvettedCandidate,
 } from './types';
+export { unstableZone } from './unstable-zone';
+export { type StarChange, varyStar } from './vary';

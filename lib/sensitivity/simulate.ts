@@ -9,6 +9,7 @@ import { eccentricityQuantile } from './eccentricity';
 import { eccentricAnomaly, trueAnomaly } from './kepler';
 import { prepareStar } from './star-model';
 import type { CoolingRelation, SensitivitySettings, StarInputs } from './types';
+import { isRemoved } from './unstable-zone';
 
 const TURN = 2 * Math.PI;
 
@@ -48,6 +49,7 @@ export function simulateCompleteness(
   }
   const mass = Float64Array.of(massMjup);
   const { curves } = prepareStar(star, cooling, mass, settings);
+  if (isRemoved(star, settings, semiMajorAxisAu)) return { completeness: 0, standardError: 0 };
   const magnitudes = drawMagnitudes(star, cooling, mass, settings, draws, seed);
   const random = createRandom(deriveSeed(seed, 'orbits'));
   const eccentricity = eccentricityQuantile(settings.eccentricity);

@@ -3,6 +3,7 @@ import { ageNodes, type WeightedNodes } from './age';
 import { checkContrastCurve } from './contrast';
 import { coolNodes } from './cooling';
 import { distanceNodes } from './distance';
+import { effectiveCurve } from './effective-curve';
 import type {
   ContrastCurve,
   CoolingRelation,
@@ -61,7 +62,8 @@ export function prepareStar(
     checkContrastCurve(curve, star.name);
     const cooled = coolNodes(cooling, curve.band, massMjup, ages.values, settings, star.name);
     reports.push(cooled.report);
-    return prepareCurve(curve, hostMags[s] - extinctionMag, cooled.magnitudes);
+    const effective = effectiveCurve(curve, star, settings);
+    return prepareCurve(effective, hostMags[s] - extinctionMag, cooled.magnitudes);
   });
   return {
     ages,
