@@ -1,9 +1,11 @@
 import {
+  hostScalingOf,
   isInside,
   meanCompleteness,
-  meanCompletenessOfStack,
   type Population,
   populationWeights,
+  rateScales,
+  sampleCompleteness,
 } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { Likelihood, RatePosterior, RatePrior } from './contract';
@@ -52,14 +54,25 @@ export interface AnswerInputs extends AnswerSettings {
   maps: StackedMaps | SummedMap;
   grid: MapGrid;
   population: Population;
+  /** Shape [star] [M_Sun], NaN where unknown: for populations that depend on the host's mass. */
+  hostMassMsun?: Float64Array;
 }
 
 /** Mean completeness under a population, which prior, detections and level do not change. */
 export interface PopulationView {
   population: Population;
-  /** Shape [star], 0..1; null where only the summed map was given. */
+  /**
+   * Shape [star], 0..1; null where only the summed map was given. Of tabulated systems the
+   * probability that any companion is seen.
+   */
   completenessPerStar: Float64Array | null;
-  /** S [stars]. */
+  /** Tabulated systems: mean number of companions seen, shape [star], >= 0; else null. */
+  numberSeenPerStar: Float64Array | null;
+  /** s_j = (M_j/M0)^gamma, shape [star]: each star's rate over the one asked for; else null. */
+  rateScale: Float64Array | null;
+  /** As given, shape [star] [M_Sun]. */
+  hostMassMsun: Float64Array | null;
+  /** S, the sum of s_j and completeness [stars]; an answer holds that of its own likelihood. */
   exposure: number;
   stars: number;
   /** Share of the population outside the maps [fraction]. */
@@ -75,31 +88,78 @@ export interface Answer extends PopulationView {
   setByPrior: boolean;
 }
 
+/** S [stars]: each star's completeness times its rate over the one asked for. */
+function sumExposure(perStar: Float64Array, rateScale: Float64Array | null): number {
+  let exposure = 0;
+  for (let j = 0; j < perStar.length; j++) exposure += (rateScale?.[j] ?? 1) * perStar[j];
+  return exposure;
+}
+
+function viewSummed(maps: SummedMap, grid: MapGrid, population: Population): PopulationView {
+  if (hostScalingOf(population) !== null) {
+    throw new RangeError("a rate that scales with the host mass needs each star's own map");
+  }
+  const weights = populationWeights(grid, population);
+  return {
+    population,
+    completenessPerStar: null,
+    numberSeenPerStar: null,
+    rateScale: null,
+    hostMassMsun: null,
+    exposure: meanCompleteness(maps.summed, weights),
+    stars: maps.stars,
+    shareOutsideMap: weights.shareOutsideMap,
+  };
+}
+
 /**
  * Mean completeness of the sample under a population.
  *
+ * @param hostMassMsun shape [star] [M_Sun], NaN where unknown: for the mass ratio and for a rate
+ *   that scales with the host mass
  * @returns per star where the maps are stacked, and their sum
- * @throws RangeError for a population that cannot be used or lies outside the maps, and for maps
- *   that do not fit the grid
+ * @throws RangeError for a population that cannot be used or lies outside the maps, for maps that do
+ *   not fit the grid, for a star whose mass is needed and missing, and for a summed map where the
+ *   stars differ (mass ratio, host scaling, tabulated systems)
  * Cost: one multiply-add per node inside the ranges and star.
  */
 export function viewPopulation(
   maps: StackedMaps | SummedMap,
   grid: MapGrid,
   population: Population,
+  hostMassMsun?: Float64Array,
 ): PopulationView {
-  const weights = populationWeights(grid, population);
-  const { shareOutsideMap } = weights;
-  if ('summed' in maps) {
-    const exposure = meanCompleteness(maps.summed, weights);
-    const { stars } = maps;
-    return { population, completenessPerStar: null, exposure, stars, shareOutsideMap };
+  if ('summed' in maps) return viewSummed(maps, grid, population);
+  const seen = sampleCompleteness(maps, grid, population, hostMassMsun);
+  const stars = seen.perStar.length;
+  const rateScale = rateScales(population, hostMassMsun, stars);
+  return {
+    population,
+    completenessPerStar: seen.perStar,
+    numberSeenPerStar: seen.numberSeenPerStar,
+    rateScale,
+    hostMassMsun: hostMassMsun ?? null,
+    exposure: sumExposure(seen.perStar, rateScale),
+    stars,
+    shareOutsideMap: seen.shareOutsideMap,
+  };
+}
+
+/**
+ * Mean completeness per star and exposure that a likelihood works with.
+ *
+ * They differ for tabulated systems alone: the mean number counts the companions seen, the host
+ * fraction whether any is.
+ */
+export function seenBy(
+  view: PopulationView,
+  likelihood: Likelihood,
+): { completeness: Float64Array | null; exposure: number } {
+  const { completenessPerStar, numberSeenPerStar, rateScale, exposure } = view;
+  if (likelihood === 'host-fraction' || numberSeenPerStar === null) {
+    return { completeness: completenessPerStar, exposure };
   }
-  const completenessPerStar = meanCompletenessOfStack(maps, weights);
-  let exposure = 0;
-  for (const c of completenessPerStar) exposure += c;
-  const stars = completenessPerStar.length;
-  return { population, completenessPerStar, exposure, stars, shareOutsideMap };
+  return { completeness: numberSeenPerStar, exposure: sumExposure(numberSeenPerStar, rateScale) };
 }
 
 /**
@@ -107,22 +167,26 @@ export function viewPopulation(
  *
  * Counted are those whose best mass and semi-major axis lie in the box, edges included; for the
  * host fraction the first of each star.
+ *
+ * @param hostMassMsun shape [star] [M_Sun]: for the mass ratio, whose box differs from star to star
  */
 export function countDetections(
   detections: readonly Detection[],
   population: Population,
   likelihood: Likelihood,
+  hostMassMsun?: Float64Array | null,
 ): { counted: Detection[]; setAside: DetectionSetAside[] } {
   const counted: Detection[] = [];
   const setAside: DetectionSetAside[] = [];
   const seen = new Set<number>();
   for (const detection of detections) {
-    if (!isInside(population, detection.massMjup, detection.semiMajorAxisAu)) {
+    const { massMjup, semiMajorAxisAu, star } = detection;
+    if (!isInside(population, massMjup, semiMajorAxisAu, hostMassMsun?.[star])) {
       setAside.push({ detection, reason: 'outside-population' });
-    } else if (likelihood === 'host-fraction' && seen.has(detection.star)) {
+    } else if (likelihood === 'host-fraction' && seen.has(star)) {
       setAside.push({ detection, reason: 'star-already-counted' });
     } else {
-      seen.add(detection.star);
+      seen.add(star);
       counted.push(detection);
     }
   }
@@ -150,22 +214,25 @@ function checkDetected(counted: Detection[], completeness: Float64Array): void {
  */
 export function answerFromView(view: PopulationView, settings: AnswerSettings): Answer {
   const { likelihood, prior, detections, level } = settings;
-  const { counted, setAside } = countDetections(detections, view.population, likelihood);
-  const { completenessPerStar } = view;
+  const { population, hostMassMsun, rateScale } = view;
+  const { counted, setAside } = countDetections(detections, population, likelihood, hostMassMsun);
+  const { completeness, exposure } = seenBy(view, likelihood);
   if (likelihood === 'host-fraction') {
-    if (completenessPerStar === null) {
+    if (completeness === null) {
       throw new RangeError("the host fraction needs each star's map, not only their sum");
     }
-    checkDetected(counted, completenessPerStar);
+    checkDetected(counted, completeness);
   }
   const posterior = ratePosterior({
     likelihood,
-    completeness: completenessPerStar ?? Float64Array.of(view.exposure),
+    completeness: completeness ?? Float64Array.of(exposure),
     detectedStars: counted.map(({ star }) => star),
     prior,
+    ...(rateScale !== null && { rateScale }),
   });
   return {
     ...view,
+    exposure,
     counted,
     setAside,
     posterior,
@@ -187,5 +254,6 @@ export function answerFromView(view: PopulationView, settings: AnswerSettings): 
  * Edges: `posterior.constrained` false means that the limit is the prior's own.
  */
 export function answerQuestion(inputs: AnswerInputs): Answer {
-  return answerFromView(viewPopulation(inputs.maps, inputs.grid, inputs.population), inputs);
+  const { maps, grid, population, hostMassMsun } = inputs;
+  return answerFromView(viewPopulation(maps, grid, population, hostMassMsun), inputs);
 }

@@ -9,7 +9,7 @@ export type {
   StackedMaps,
   SummedMap,
 } from './answer';
-export { answerFromView, answerQuestion, countDetections, viewPopulation } from './answer';
+export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation } from './answer';
 export type { Likelihood, RatePosterior, RatePrior, RateQuantity, RateQuestion } from './contract';
 export type { ExposureContributions } from './contributions';
 export { exposureContributions } from './contributions';
@@ -33,13 +33,17 @@ export {
 } from './intervals';
 export type { LevelLimit } from './levels';
 export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
+export {
+  describePlanet,
+  describePlanets,
+  describePopulation,
+  describeStars,
+} from './population-words';
 export { ratePosterior } from './posterior';
 export { priorFor } from './prior-for';
 export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
 export {
   describeLevel,
   describeLimit,
-  describePlanets,
-  describePopulation,
   describePrior,
 } from './statement';

@@ -1,16 +1,22 @@
 import type { Population } from '@/lib/population';
-import { fromLogIndex, SHARE_OUTSIDE_WARNING } from '@/lib/population';
+import { SHARE_OUTSIDE_WARNING } from '@/lib/population';
 import {
   formatInterval,
   formatPercent,
   formatPlain,
-  formatRange,
   formatRate,
   formatSignificant,
   type RateQuantity,
   THIN_SPACE,
 } from '@/lib/quantities/display';
 import type { RatePrior } from './contract';
+import {
+  describePlanet,
+  describePlanets,
+  describePopulation,
+  describeStars,
+  populationConditions,
+} from './population-words';
 
 /** Everything that a limit rests on; texts in plain words, without a full stop. */
 export interface StatementInputs {
@@ -35,6 +41,8 @@ export interface StatementInputs {
   constrained: boolean;
   setByPrior: boolean;
   interval?: StatedInterval;
+  /** Where the prior of f ends because the rate scales with the host's mass; null or left out: nowhere. */
+  cutAt?: number | null;
 }
 
 /** An interval quoted beside the limit once something was detected. */
@@ -59,37 +67,9 @@ export interface Statement {
   entries: Condition[];
 }
 
-const MASS_UNIT = 'MJ';
-const AXIS_UNIT = 'AU';
-
 /** A level as people write it: 95 %, 99.7 %. */
 export function describeLevel(level: number): string {
   return `${formatPlain(100 * level, 6)}${THIN_SPACE}%`;
-}
-
-/** 'planets of 2–30 MJ at 20–300 AU'. */
-export function describePlanets(population: Population): string {
-  const mass = formatRange(population.massMinMjup, population.massMaxMjup, MASS_UNIT);
-  const axis = formatRange(population.semiMajorAxisMinAu, population.semiMajorAxisMaxAu, AXIS_UNIT);
-  return `planets of ${mass} at ${axis}`;
-}
-
-/**
- * The shape of a population, indices in the linear convention.
- *
- * @example describePopulation(population)
- * // 'dN/dM ∝ M^−1.3 between 2 and 30 MJ, dN/da ∝ a^−0.6 between 20 and 300 AU'
- */
-export function describePopulation(population: Population): string {
-  const index = (logIndex: number) => formatPlain(fromLogIndex(logIndex, 'linear'));
-  const between = (low: number, high: number, unit: string) =>
-    `between ${formatPlain(low)} and ${formatPlain(high)} ${unit}`;
-  return (
-    `dN/dM ∝ M^${index(population.massIndex)} ` +
-    `${between(population.massMinMjup, population.massMaxMjup, MASS_UNIT)}, ` +
-    `dN/da ∝ a^${index(population.semiMajorAxisIndex)} ` +
-    between(population.semiMajorAxisMinAu, population.semiMajorAxisMaxAu, AXIS_UNIT)
-  );
 }
 
 const rateName = (quantity: RateQuantity): string =>
@@ -128,11 +108,13 @@ function describeNumber(inputs: StatementInputs): string {
   const planets = describePlanets(population);
   if (!inputs.constrained) return `These data do not constrain ${planets}`;
   const level = describeLevel(credibleLevel);
+  const stars = describeStars(population);
   if (quantity === 'host_fraction') {
     const share = formatRate(limit, quantity);
-    return `<${share} of stars host at least one ${planets.replace('planets', 'planet')} (${level})`;
+    const one = population.form === 'systems' ? 'one' : 'at least one';
+    return `<${share} of ${stars} host ${one} ${describePlanet(population)} (${level})`;
   }
-  return `<${formatSignificant(100 * limit, 2)} ${planets} per 100 stars (${level})`;
+  return `<${formatSignificant(100 * limit, 2)} ${planets} per 100 ${stars} (${level})`;
 }
 
 function describeInterval(interval: StatedInterval, quantity: RateQuantity): string {
@@ -172,6 +154,7 @@ function listConditions(inputs: StatementInputs): Condition[] {
     { label: 'Credible level', text: describeLevel(inputs.credibleLevel) },
     { label: 'Prior', text: describePrior(inputs.prior, quantity) },
     { label: 'Population', text: describePopulation(inputs.population) },
+    ...populationConditions(inputs.population, quantity === 'host_fraction', inputs.cutAt ?? null),
     { label: 'Likelihood', text: likelihood },
     { label: 'Detections', text: found },
     {

@@ -1,4 +1,15 @@
-export type { IndexConvention } from './conventions';
+export type {
+  AxisShape,
+  BrokenPowerLawShape,
+  LogNormalShape,
+  PowerLawShape,
+  TabulatedShape,
+} from './axis-shape';
+export { axisLaw, indicesOf, mapIndices } from './axis-shape';
+export { isInside, populationBox, sampleBox } from './box';
+export { brokenPowerLaw } from './broken-power-law';
+export { checkPopulation, populationWarnings } from './checks';
+export type { AxisConvention, IndexConvention, MassConvention } from './conventions';
 export {
   AXIS_PER_PERIOD_FACTOR,
   axisIndexFromPeriodIndex,
@@ -6,13 +17,39 @@ export {
   LOG10_DENSITY_FACTOR,
   toLogIndex,
 } from './conventions';
-export { drawCompanions } from './draws';
+export type { StatedConventions } from './convert';
+export { toStoredPopulation } from './convert';
+export type { DrawnCompanions, DrawnSystems } from './draws';
+export { drawCompanions, drawSystems } from './draws';
 export type { PopulationLaws } from './forms';
-export { populationDensity, populationLaws } from './forms';
+export { axisShapes, populationDensity, populationLaws } from './forms';
+export {
+  largestReferenceFraction,
+  massOfRatioMjup,
+  rateScales,
+  requireHostMasses,
+  starsWithoutMass,
+} from './host-mass';
 export type { AxisLaw, BoundedLaw } from './law';
-export type { Population, PowerLawPopulation } from './population';
-export { checkPopulation, isInside } from './population';
+export { logNormal } from './log-normal';
+export { marginalWeights } from './marginals';
+export type {
+  HostScaling,
+  LawPopulation,
+  MassRatioPopulation,
+  Population,
+  PopulationBox,
+  PowerLawPopulation,
+  ShapedPopulation,
+  SystemsPopulation,
+} from './population';
+export { hostScalingOf, needsHostMass } from './population';
 export { powerLaw } from './power-law';
+export type { SampleCompleteness } from './sample-completeness';
+export { sampleCompleteness } from './sample-completeness';
+export type { SystemsOnGrid, SystemsSeen } from './systems';
+export { seeSystems, systemsOnGrid } from './systems';
+export { tabulatedLaw } from './tabulated';
 export type { PopulationWeights } from './weights';
 export {
   meanCompleteness,

@@ -1,73 +1,93 @@
+import type { AxisShape } from './axis-shape';
+
+/** How the rate depends on the star: rate_j = rate (M_j/referenceMsun)^index. */
+export interface HostScaling {
+  /** gamma [1]. */
+  index: number;
+  /** M0, the host mass at which the rate is quoted [M_Sun], > 0. */
+  referenceMsun: number;
+}
+
+interface AxisRange {
+  /** Lower edge of the box in semi-major axis [au], > 0. */
+  semiMajorAxisMinAu: number;
+  /** Upper edge of the box in semi-major axis [au], > semiMajorAxisMinAu. */
+  semiMajorAxisMaxAu: number;
+}
+
+interface MassRange {
+  /** Lower edge of the box in mass [M_Jup], > 0. */
+  massMinMjup: number;
+  /** Upper edge of the box in mass [M_Jup], > massMinMjup. */
+  massMaxMjup: number;
+}
+
+/** Ranges of companions: edges in mass [M_Jup] and semi-major axis [au]. */
+export interface PopulationBox extends MassRange, AxisRange {}
+
 /**
  * Shape of the companion distribution: m^massIndex a^semiMajorAxisIndex per d ln m d ln a on a box.
  *
  * Both indices are stored per natural logarithm; `fromLogIndex` gives the linear ones that screens
  * show. The shape says nothing about how many companions there are: that is the rate.
  */
-export interface PowerLawPopulation {
+export interface PowerLawPopulation extends PopulationBox {
   form: 'power-law';
-  /** Lower edge of the box in mass [M_Jup], > 0. */
-  massMinMjup: number;
-  /** Upper edge of the box in mass [M_Jup], > massMinMjup. */
-  massMaxMjup: number;
-  /** Lower edge of the box in semi-major axis [au], > 0. */
-  semiMajorAxisMinAu: number;
-  /** Upper edge of the box in semi-major axis [au], > semiMajorAxisMinAu. */
-  semiMajorAxisMaxAu: number;
   /** alpha: index of dN/d ln m [1]. */
   massIndex: number;
   /** beta: index of dN/d ln a [1]. */
   semiMajorAxisIndex: number;
+  hostScaling?: HostScaling | undefined;
 }
+
+/** Any law along each axis of a box; the density is the product of the two. */
+export interface ShapedPopulation extends PopulationBox {
+  form: 'shaped';
+  mass: AxisShape;
+  semiMajorAxis: AxisShape;
+  hostScaling?: HostScaling | undefined;
+}
+
+/** dN/d ln q proportional to q^massRatioIndex: the range of masses differs from star to star. */
+export interface MassRatioPopulation extends AxisRange {
+  form: 'mass-ratio';
+  /** Lower edge in q = companion mass / host mass [1], > 0. */
+  massRatioMin: number;
+  /** Upper edge in q [1], > massRatioMin. */
+  massRatioMax: number;
+  massRatioIndex: number;
+  semiMajorAxis: AxisShape;
+  hostScaling?: HostScaling | undefined;
+}
+
+/**
+ * A table of whole planetary systems, in columns. The question is which fraction of stars may host
+ * such systems; a system without companions counts.
+ */
+export interface SystemsPopulation {
+  form: 'systems';
+  /** Shape [system], >= 0; only their ratios matter. */
+  weight: number[];
+  /** Shape [companion]: index of its system. */
+  companionSystem: number[];
+  /** Shape [companion] [M_Jup], > 0. */
+  massMjup: number[];
+  /** Shape [companion] [au], > 0. */
+  semiMajorAxisAu: number[];
+}
+
+/** Laws along the two axes: everything but tabulated systems. */
+export type LawPopulation = PowerLawPopulation | ShapedPopulation | MassRatioPopulation;
 
 /** Every form of population that the product knows; a new form joins this union and `forms.ts`. */
-export type Population = PowerLawPopulation;
+export type Population = LawPopulation | SystemsPopulation;
 
-function checkRange(min: number, max: number, what: string, unit: string): void {
-  if (!(min > 0) || !Number.isFinite(min)) {
-    throw new RangeError(`${what}: the lower end must be a positive number [${unit}], got ${min}`);
-  }
-  if (!(max > min) || !Number.isFinite(max)) {
-    throw new RangeError(
-      `${what}: the upper end must exceed the lower one, got ${min} to ${max} ${unit}`,
-    );
-  }
+/** Scaling with the host's mass, or null where every star has the same rate. */
+export function hostScalingOf(population: Population): HostScaling | null {
+  return population.form === 'systems' ? null : (population.hostScaling ?? null);
 }
 
-/**
- * Refuses a population whose ranges or indices cannot be used.
- *
- * @throws RangeError for a range that is not positive and increasing, or an index that is not finite
- */
-export function checkPopulation(population: Population): void {
-  checkRange(population.massMinMjup, population.massMaxMjup, 'planet mass', 'M_Jup');
-  checkRange(population.semiMajorAxisMinAu, population.semiMajorAxisMaxAu, 'semi-major axis', 'au');
-  if (!Number.isFinite(population.massIndex)) {
-    throw new RangeError(`massIndex must be a finite number, got ${population.massIndex}`);
-  }
-  if (!Number.isFinite(population.semiMajorAxisIndex)) {
-    throw new RangeError(
-      `semiMajorAxisIndex must be a finite number, got ${population.semiMajorAxisIndex}`,
-    );
-  }
-}
-
-/**
- * Whether a companion's best mass and semi-major axis lie in the box of a population.
- *
- * @param massMjup scalar [M_Jup]
- * @param semiMajorAxisAu scalar [au]
- * @returns true inside and on the edges: a companion exactly at a cutoff counts
- */
-export function isInside(
-  population: Population,
-  massMjup: number,
-  semiMajorAxisAu: number,
-): boolean {
-  return (
-    massMjup >= population.massMinMjup &&
-    massMjup <= population.massMaxMjup &&
-    semiMajorAxisAu >= population.semiMajorAxisMinAu &&
-    semiMajorAxisAu <= population.semiMajorAxisMaxAu
-  );
+/** Whether nothing can be said about a star of unknown mass. */
+export function needsHostMass(population: Population): boolean {
+  return population.form === 'mass-ratio' || hostScalingOf(population) !== null;
 }

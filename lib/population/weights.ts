@@ -1,7 +1,6 @@
-import { gaussLegendre } from '@/lib/numerics/quadrature';
 import type { MapGrid } from '@/lib/sensitivity';
+import { axisWeights, shareInside } from './axis-weights';
 import { populationLaws } from './forms';
-import type { BoundedLaw } from './law';
 import type { Population } from './population';
 
 /** Weights whose product with a map is its mean completeness under a population. */
@@ -17,40 +16,13 @@ export interface PopulationWeights {
 /** Share outside the map above which a result carries a warning. */
 export const SHARE_OUTSIDE_WARNING = 0.2;
 
-const POINTS = 24;
-
-/** Integral of each node's hat function times the law, cut at the box and at the law's breaks. */
-function axisWeights(nodes: Float64Array, { law, min, max }: BoundedLaw): Float64Array {
-  const weights = new Float64Array(nodes.length);
-  const whole = law.integral(min, max);
-  const rule = gaussLegendre(POINTS);
-  for (let i = 0; i + 1 < nodes.length; i++) {
-    const from = Math.max(nodes[i], min);
-    const to = Math.min(nodes[i + 1], max);
-    if (!(from < to)) continue;
-    const logStart = Math.log(nodes[i]);
-    const logStep = Math.log(nodes[i + 1] / nodes[i]);
-    const inner = law.breaks.filter((at) => at > from && at < to);
-    const cuts = [from, ...inner, to];
-    for (let piece = 0; piece + 1 < cuts.length; piece++) {
-      const middle = 0.5 * Math.log(cuts[piece] * cuts[piece + 1]);
-      const half = 0.5 * Math.log(cuts[piece + 1] / cuts[piece]);
-      for (let q = 0; q < POINTS; q++) {
-        const y = middle + half * rule.nodes[q];
-        const share = (half * rule.weights[q] * law.shape(Math.exp(y))) / whole;
-        const upper = (y - logStart) / logStep;
-        weights[i] += share * (1 - upper);
-        weights[i + 1] += share * upper;
-      }
-    }
-  }
-  return weights;
-}
-
-function shareInside(nodes: Float64Array, { law, min, max }: BoundedLaw): number {
-  const from = Math.max(nodes[0], min);
-  const to = Math.min(nodes[nodes.length - 1], max);
-  return from < to ? law.integral(from, to) / law.integral(min, max) : 0;
+/** The fault of a population of which a sample's maps hold nothing. */
+export function entirelyOutside({ massMjup, semiMajorAxisAu }: MapGrid): RangeError {
+  return new RangeError(
+    'the population lies entirely outside the completeness maps ' +
+      `(${massMjup[0]} to ${massMjup[massMjup.length - 1]} M_Jup, ` +
+      `${semiMajorAxisAu[0]} to ${semiMajorAxisAu[semiMajorAxisAu.length - 1]} au)`,
+  );
 }
 
 /**
@@ -61,22 +33,22 @@ function shareInside(nodes: Float64Array, { law, min, max }: BoundedLaw): number
  * box edges, which need not be nodes. Outside the map completeness counts as 0.
  *
  * @param grid nodes of the map, both axes increasing and positive [M_Jup], [au]
- * @param population shape and box; the box may exceed the map
+ * @param population laws and box; the box may exceed the map
+ * @param hostMassMsun M_j [M_Sun]: needed for the mass ratio alone
  * @returns weights per axis, and the share of the population outside the map
- * @throws RangeError for a population that cannot be used, and for one entirely outside the map
- * Accuracy: 1e-13 relative for indices up to 10 in size. Cost: 24 powers per node.
+ * @throws RangeError for a population that cannot be used, for one entirely outside the map, for
+ *   tabulated systems, which have no weights of their own, and for a missing host mass
+ * Accuracy and cost: as `axisWeights`.
  */
-export function populationWeights(grid: MapGrid, population: Population): PopulationWeights {
-  const laws = populationLaws(population);
+export function populationWeights(
+  grid: MapGrid,
+  population: Population,
+  hostMassMsun?: number,
+): PopulationWeights {
+  const laws = populationLaws(population, hostMassMsun);
   const inside =
     shareInside(grid.massMjup, laws.mass) * shareInside(grid.semiMajorAxisAu, laws.semiMajorAxis);
-  if (!(inside > 0)) {
-    throw new RangeError(
-      'the population lies entirely outside the completeness maps ' +
-        `(${grid.massMjup[0]} to ${grid.massMjup[grid.massMjup.length - 1]} M_Jup, ` +
-        `${grid.semiMajorAxisAu[0]} to ${grid.semiMajorAxisAu[grid.semiMajorAxisAu.length - 1]} au)`,
-    );
-  }
+  if (!(inside > 0)) throw entirelyOutside(grid);
   return {
     mass: axisWeights(grid.massMjup, laws.mass),
     semiMajorAxis: axisWeights(grid.semiMajorAxisAu, laws.semiMajorAxis),
@@ -85,7 +57,7 @@ export function populationWeights(grid: MapGrid, population: Population): Popula
 }
 
 /** First and one past the last node that carries weight. */
-function activeRange(weights: Float64Array): [number, number] {
+export function activeRange(weights: Float64Array): [number, number] {
   let first = 0;
   let end = weights.length;
   while (first < end && weights[first] === 0) first++;

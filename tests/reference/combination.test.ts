@@ -10,6 +10,7 @@ import {
   regridNodes,
 } from '@/lib/sensitivity';
 import { runCheckFile } from './support/check-file';
+import { checkedPopulation, type PopulationInputs } from './support/check-populations';
 
 interface NodeMapInputs {
   masses_mjup: number[];
@@ -66,26 +67,19 @@ const posteriorOf = (stars: number, completeness: number) =>
     prior: { law: 'gamma', shape: 1, rate: 0 },
   });
 
-const powerLawMean = ({ map, population }: { map: NodeMapInputs; population: PowerLawInputs }) => {
+const populationMean = ({
+  map,
+  population,
+}: {
+  map: NodeMapInputs;
+  population: PopulationInputs;
+}) => {
   const star = nodeMap(map);
-  const weights = populationWeights(star, {
-    form: 'power-law',
-    massMinMjup: population.mass_range_mjup[0],
-    massMaxMjup: population.mass_range_mjup[1],
-    semiMajorAxisMinAu: population.axis_range_au[0],
-    semiMajorAxisMaxAu: population.axis_range_au[1],
-    massIndex: population.mass.p.index,
-    semiMajorAxisIndex: population.axis.p.index,
-  });
-  return meanCompleteness(star.completeness, weights);
+  return meanCompleteness(
+    star.completeness,
+    populationWeights(star, checkedPopulation(population)),
+  );
 };
-
-interface PowerLawInputs {
-  mass: { p: { index: number } };
-  axis: { p: { index: number } };
-  mass_range_mjup: [number, number];
-  axis_range_au: [number, number];
-}
 
 runCheckFile('combination', {
   runners: {
@@ -132,10 +126,6 @@ runCheckFile('combination', {
         integral_after: cellIntegral(after),
       };
     },
-    'mean completeness under power-law': powerLawMean,
-  },
-  later: {
-    'mean completeness under log-normal': 'log-normal laws (7.3) come with the wider populations',
-    'mean completeness under broken': 'broken power laws (7.3) come with the wider populations',
+    'mean completeness under ': populationMean,
   },
 });

@@ -1,15 +1,26 @@
+import { ratePosterior, upperLimit } from '@/lib/inference';
 import {
   AXIS_PER_PERIOD_FACTOR,
   axisIndexFromPeriodIndex,
   fromLogIndex,
   LOG10_DENSITY_FACTOR,
+  largestReferenceFraction,
+  type MassRatioPopulation,
   type Population,
+  type PowerLawPopulation,
+  populationBox,
   populationDensity,
   populationLaws,
   powerLaw,
+  rateScales,
+  type SystemsPopulation,
+  sampleCompleteness,
+  seeSystems,
+  systemsOnGrid,
 } from '@/lib/population';
 import { semiMajorAxisAuOfPeriod } from '@/lib/quantities/periods';
 import { runCheckFile } from './support/check-file';
+import { checkedPopulation, type PopulationInputs } from './support/check-populations';
 
 type Range = [number, number];
 
@@ -20,6 +31,31 @@ const axisIndex = axisIndexFromPeriodIndex(published.periodIndex);
 const axisRange = published.periodsDays.map((days) => semiMajorAxisAuOfPeriod(days, 1)) as Range;
 const perLnMassLnAxis =
   published.fraction / (massIntegral * powerLaw(axisIndex).integral(...axisRange));
+
+interface DensityInputs {
+  population: PopulationInputs;
+  points_mjup_au: Range[];
+}
+
+interface SystemsInputs {
+  masses_mjup: number[];
+  axes_au: number[];
+  completeness: number[][];
+  /** Per system its companions: mass and semi-major axis. */
+  systems: Range[][];
+  weights: number[];
+}
+
+function systemsOf(systems: Range[][], weight: number[]): SystemsPopulation {
+  const companions = systems.flatMap((system, y) => system.map(([m, a]) => ({ y, m, a })));
+  return {
+    form: 'systems',
+    weight,
+    companionSystem: companions.map(({ y }) => y),
+    massMjup: companions.map(({ m }) => m),
+    semiMajorAxisAu: companions.map(({ a }) => a),
+  };
+}
 
 runCheckFile('populations', {
   runners: {
@@ -61,16 +97,8 @@ runCheckFile('populations', {
       perLnMassLnAxis *
       powerLaw(published.massIndex).integral(...masses) *
       powerLaw(axisIndex).integral(...axes),
-    'density of power-law': ({ population: inputs, points_mjup_au: points }) => {
-      const population: Population = {
-        form: 'power-law',
-        massMinMjup: inputs.mass_range_mjup[0],
-        massMaxMjup: inputs.mass_range_mjup[1],
-        semiMajorAxisMinAu: inputs.axis_range_au[0],
-        semiMajorAxisMaxAu: inputs.axis_range_au[1],
-        massIndex: inputs.mass.p.index,
-        semiMajorAxisIndex: inputs.axis.p.index,
-      };
+    'density of ': ({ population: inputs, points_mjup_au: points }: DensityInputs) => {
+      const population: Population = checkedPopulation(inputs);
       const { mass, semiMajorAxis } = populationLaws(population);
       return {
         normalisation_mass: mass.law.integral(mass.min, mass.max),
@@ -78,12 +106,71 @@ runCheckFile('populations', {
         density_dlnm_dlna: points.map(([m, a]: Range) => populationDensity(population, m, a)),
       };
     },
-  },
-  later: {
-    'density of log-normal': 'log-normal laws (7.3) come with the wider populations',
-    'density of broken': 'broken power laws (7.3) come with the wider populations',
-    'mass ratio law': 'laws in the mass ratio (7.4) come with the wider populations',
-    'host mass scaling': 'scaling with the host mass (7.5) comes with the wider populations',
-    'tabulated systems': 'tabulated systems (7.6) come with the wider populations',
+    'mass ratio law': ({ index_dN_dlnq: index, range_q: range, host_mass_sun: host }) => {
+      const population: MassRatioPopulation = {
+        form: 'mass-ratio',
+        massRatioMin: range[0],
+        massRatioMax: range[1],
+        massRatioIndex: index,
+        semiMajorAxisMinAu: 10,
+        semiMajorAxisMaxAu: 200,
+        semiMajorAxis: { shape: 'power-law', index: 0 },
+      };
+      const box = populationBox(population, host);
+      const middle = Math.sqrt(box.massMinMjup * box.massMaxMjup);
+      const { law } = populationLaws(population, host).mass;
+      return {
+        mass_range_mjup: [box.massMinMjup, box.massMaxMjup],
+        index_dN_dlnm: Math.log(law.shape(middle * Math.E) / law.shape(middle)),
+        integral_dlnq: powerLaw(population.massRatioIndex).integral(range[0], range[1]),
+      };
+    },
+    'host mass scaling': ({ gamma, reference_mass_sun: reference, ...sample }) => {
+      const population: PowerLawPopulation = {
+        form: 'power-law',
+        massMinMjup: 1,
+        massMaxMjup: 10,
+        semiMajorAxisMinAu: 10,
+        semiMajorAxisMaxAu: 100,
+        massIndex: 0,
+        semiMajorAxisIndex: 0,
+        hostScaling: { index: gamma, referenceMsun: reference },
+      };
+      const masses = Float64Array.from(sample.host_masses_sun as number[]);
+      const scales = rateScales(population, masses, masses.length) as Float64Array;
+      const scaled = scales.map((scale, star) => scale * sample.completeness[star]);
+      const exposure = scaled.reduce((a, b) => a + b);
+      const posterior = ratePosterior({
+        likelihood: 'mean-number',
+        completeness: scaled,
+        detectedStars: [],
+        prior: { law: 'gamma', shape: 1, rate: 0 },
+      });
+      return {
+        weights: scales,
+        exposure,
+        largest_fraction_at_reference: largestReferenceFraction(scales),
+        upper_limit_95_mean_number_no_detection: upperLimit(posterior, 0.95),
+      };
+    },
+    'tabulated systems': (inputs: SystemsInputs) => {
+      const grid = {
+        massMjup: Float64Array.from(inputs.masses_mjup),
+        semiMajorAxisAu: Float64Array.from(inputs.axes_au),
+      };
+      const map = Float64Array.from(inputs.completeness.flat());
+      const whole = systemsOf(inputs.systems, inputs.weights);
+      const seen = sampleCompleteness(map, grid, whole);
+      const alone = inputs.systems.map((system) => {
+        if (system.length === 0) return { anySeen: 0, numberSeen: 0 };
+        return seeSystems(map, 0, systemsOnGrid(grid, systemsOf([system], [1])));
+      });
+      return {
+        any_seen: alone.map(({ anySeen }) => anySeen),
+        number_seen: alone.map(({ numberSeen }) => numberSeen),
+        mean_any_seen: seen.perStar[0],
+        mean_number_seen: seen.numberSeenPerStar?.[0],
+      };
+    },
   },
 });
