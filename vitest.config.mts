@@ -24,6 +24,8 @@ export default defineConfig({
       project('unit', ['tests/lib/**/*.test.ts', 'tests/components/**/*.test.ts']),
       // Pure functions against outside values: no state that one file could leave to the next.
       project('reference', ['tests/reference/**/*.test.ts'], { isolate: false }),
+      // Other programs, asked anew: the step of that name finds out which are installed.
+      project('live-reference', ['tests/live-reference/**/*.test.ts']),
       project(
         'database',
         ['tests/database/**/*.test.ts', 'tests/routes/**/*.test.ts'],

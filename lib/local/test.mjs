@@ -17,6 +17,7 @@ import {
 } from './test-checks.mjs';
 import { addCounts } from './test-counts.mjs';
 import { prepareTestDatabase, stopTestDatabase, testBundleFolder } from './test-database.mjs';
+import { checkLiveReference } from './test-live-reference.mjs';
 
 const reports = path.join(dataFolder(), 'test-reports');
 const reportOf = (/** @type {string} */ name) => path.join(reports, `${name}.json`);
@@ -63,6 +64,7 @@ const steps = {
   'pure-types': checkPureTypes,
   unit: () => plainTests('unit'),
   reference: () => plainTests('reference'),
+  'live-reference': () => checkLiveReference(reportOf('live-reference')),
   database: () => databaseTests('database'),
   workers: () => databaseTests('workers'),
   build: checkBuild,
@@ -80,7 +82,8 @@ async function runStep(name) {
   }
   const seconds = ((Date.now() - start) / 1000).toFixed(1);
   const failed = count.failed > 0 ? `, ${count.failed} failed` : '';
-  say(`${name.padEnd(11)} ${count.passed} passed${failed} (${seconds} s)`);
+  const missed = count.notRun?.length > 0 ? ', some not run' : '';
+  say(`${name.padEnd(14)} ${count.passed} passed${failed}${missed} (${seconds} s)`);
   for (const note of count.notes) say(`\n${note}\n`);
   return count;
 }
@@ -126,6 +129,7 @@ async function runSteps(/** @type {string[]} */ names) {
   }
   await cleanUp();
   const { passed, failed } = addCounts(counts);
+  for (const what of counts.flatMap((count) => count.notRun ?? [])) say(`not run: ${what}`);
   say(`${passed} passed, ${failed} failed`);
   return failed > 0 || passed === 0 ? 1 : 0;
 }
