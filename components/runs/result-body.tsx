@@ -5,6 +5,7 @@ import { PosteriorChart, type PosteriorView } from '@/components/charts/posterio
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { FurtherQuestions } from '@/components/studies/further-questions';
 import { FoldSection } from '@/components/ui/fold-section';
 import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
@@ -141,6 +142,14 @@ export function ResultBody(props: ResultBodyProps) {
           <Provenance collaboration={collaboration} run={run} />
           <ProvenanceDetails run={run} result={result} />
         </FoldSection>
+        <div className="md:mt-8">
+          <FurtherQuestions
+            number={7}
+            collaboration={collaboration}
+            analysisKey={run.analysis.key}
+            runId={run.id}
+          />
+        </div>
       </div>
       <FootBar>
         <div className="min-w-0 flex-1 leading-[1.2]">

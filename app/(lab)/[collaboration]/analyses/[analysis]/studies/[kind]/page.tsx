@@ -1,0 +1,26 @@
+import type { Metadata } from 'next';
+import { notFound, redirect } from 'next/navigation';
+import { isStudyKind, kindWords, questionAddress } from '@/components/studies/kind-words';
+import { StudyPage } from '@/components/studies/study-page';
+import { studyInputs } from '../study-inputs';
+
+interface PageProps {
+  params: Promise<{ collaboration: string; analysis: string; kind: string }>;
+  searchParams: Promise<{ answer?: string }>;
+}
+
+export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
+  const { analysis, kind } = await params;
+  return { title: isStudyKind(kind) ? `${kindWords[kind].title}, ${analysis}` : analysis };
+}
+
+export default async function FurtherQuestionPage({ params, searchParams }: PageProps) {
+  const { collaboration, analysis, kind } = await params;
+  if (!isStudyKind(kind)) notFound();
+  const { answer } = await searchParams;
+  // Some kinds have a page of their own.
+  const place = questionAddress(collaboration, analysis, kind, answer);
+  if (!place.includes('/studies/')) redirect(place);
+  const inputs = await studyInputs(collaboration, analysis);
+  return <StudyPage key={`${analysis} ${kind}`} kind={kind} answerId={answer} {...inputs} />;
+}

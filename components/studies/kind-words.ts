@@ -1,0 +1,73 @@
+import type { StudyKind } from '@/lib/schemas/study-settings';
+
+interface KindWords {
+  title: string;
+  /** The question as a referee would put it. */
+  question: string;
+}
+
+/** Titles and questions, in the order in which they are listed. */
+export const kindWords: Record<StudyKind, KindWords> = {
+  systematics: {
+    title: 'What moves the limit',
+    question: 'Which assumption would move the limit most if it were wrong?',
+  },
+  influence: {
+    title: 'Which stars carry the limit',
+    question: 'Does the limit rest on a handful of stars, on one survey or on one young group?',
+  },
+  'limit-map': {
+    title: 'Limit map',
+    question: 'For which planets, at which distance from their star, do these data say something?',
+  },
+  sweep: {
+    title: 'Limit against ranges and indices',
+    question:
+      'How much does the limit depend on where a range was cut or on which slope was chosen?',
+  },
+  'free-indices': {
+    title: 'Free indices',
+    question:
+      'What becomes of the limit if the slopes are not known but fitted along with the rate?',
+  },
+  'overlap-rules': {
+    title: 'Overlaps',
+    question:
+      'Some stars were observed by several surveys: what does the way of counting them change?',
+  },
+  'population-comparison': {
+    title: 'Populations compared',
+    question: 'Which of several planet populations do the detections speak for, and how strongly?',
+  },
+  counts: {
+    title: 'How many detections',
+    question: 'Is the number of detections what this rate predicts, and what would a repeat find?',
+  },
+  calibration: {
+    title: 'Calibration',
+    question:
+      'If surveys like this one were simulated, how often would the limit lie above the truth?',
+  },
+  forecast: {
+    title: 'Forecast',
+    question: 'What would more stars or deeper images add?',
+  },
+};
+
+export const kindOrder = Object.keys(kindWords) as StudyKind[];
+
+export function isStudyKind(text: string): text is StudyKind {
+  return Object.hasOwn(kindWords, text);
+}
+
+/** Where a question of a kind is asked and answered; an answer may be named. */
+export function questionAddress(
+  collaboration: string,
+  analysis: string,
+  kind: StudyKind,
+  answerId?: string,
+): string {
+  const base = `/${collaboration}/analyses/${analysis}`;
+  const page = kind === 'calibration' ? `${base}/calibration` : `${base}/studies/${kind}`;
+  return answerId === undefined ? page : `${page}?answer=${answerId}`;
+}

@@ -1,0 +1,39 @@
+import dynamic from 'next/dynamic';
+import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { countsInWords } from './counts/counts-words';
+import type { KindEntry } from './kind-entry';
+
+const AnswerWaits = () => (
+  <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
+    Drawing the answer
+  </p>
+);
+const FormWaits = () => (
+  <p className="rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
+    Opening the settings
+  </p>
+);
+const whileAnswer = { loading: AnswerWaits };
+const whileForm = { loading: FormWaits };
+
+/** Each kind brings its form, its answer and its numbers; a page loads those of one kind. */
+export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
+  counts: {
+    Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, whileForm),
+    Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer, whileAnswer),
+    settingsInWords: countsInWords,
+    loadTables: async () => (await import('./counts/counts-tables')).countsTables,
+  },
+};
+
+/** Settings of any kind in words. */
+export function settingsInWords(settings: StudySettings): string {
+  return inWords(settings.kind, settings);
+}
+
+function inWords<Kind extends StudyKind>(
+  kind: Kind,
+  settings: Extract<StudySettings, { kind: Kind }>,
+): string {
+  return kinds[kind]?.settingsInWords(settings) ?? kind;
+}
