@@ -1,38 +1,35 @@
 import { interpolateLinear } from '@/lib/numerics/interpolate';
-import type { ContrastCurve, StarInputs, UnvettedCandidate } from './types';
+import type { ContrastCurve, UnvettedCandidate } from './types';
 
 /** Width of an edge in ln θ: so narrow that every integral takes it as a jump. */
 const EDGE = 5e-8;
 
-/** The star with the sources at which its sensitivity is cut, in place of earlier ones. */
-export function cutAtCandidates(
-  star: StarInputs,
-  sources: UnvettedCandidate[],
-  halfWidthArcsec: number,
-): StarInputs {
-  if (sources.length === 0) {
-    const { candidates, ...rest } = star;
-    return rest;
-  }
-  return { ...star, candidates: { halfWidthArcsec, sources } };
-}
-
 /**
- * A curve cut where a source lies of which nobody knows whether it is bound.
+ * A curve cut where sources lie of which nobody knows whether they are bound.
  *
- * Over the annulus within the half-width of the source's separation the limit is at most as faint as
+ * Over the annulus within the half-width of a source's separation the limit is at most as faint as
  * the source: companions like it or fainter cannot be said to be absent there, at any position
  * angle, as the curve does not tell one angle from another (our rule, on the safe side). A source
  * without a contrast, or with one in another band, takes the annulus out: coverage 0. The edges are
  * upright, the curve beyond them stays as it is. A source beyond the curve changes nothing.
  *
  * @param curve as checkContrastCurve accepts it, not modified
- * @param source see UnvettedCandidate
+ * @param sources see UnvettedCandidate; the order does not matter
  * @param halfWidthArcsec half-width of the annulus, [arcsec], > 0
- * @returns a new curve
+ * @returns the curve, a new one where a source lies on it
  * @throws RangeError for a separation or half-width not > 0, or a contrast that is < 0 or not finite
  */
-export function cutCurveAt(
+export function cutAtCandidates(
+  curve: ContrastCurve,
+  sources: readonly UnvettedCandidate[],
+  halfWidthArcsec: number,
+): ContrastCurve {
+  let cut = curve;
+  for (const source of sources) cut = cutAtOne(cut, source, halfWidthArcsec);
+  return cut;
+}
+
+function cutAtOne(
   curve: ContrastCurve,
   source: UnvettedCandidate,
   halfWidthArcsec: number,

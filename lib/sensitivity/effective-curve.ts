@@ -1,13 +1,13 @@
-import { cutCurveAt } from './candidate-cut';
+import { cutAtCandidates } from './candidate-cut';
 import { correctForSmallSamples } from './small-sample';
 import type { ContrastCurve, SensitivitySettings, StarInputs } from './types';
 
 /**
- * A curve as the integral takes it: thresholds raised for few resolution elements where the settings
- * ask for it, then cut at the star's unvetted candidates.
+ * A curve as the integral takes it: thresholds raised for few resolution elements and cut at the
+ * star's candidates where the settings ask for it, in this order.
  *
  * @param curve as checkContrastCurve accepts it, not modified
- * @param star whose candidates are cut
+ * @param star whose candidates they are
  * @param settings see SensitivitySettings
  * @throws RangeError for a size, separation or contrast outside its domain
  */
@@ -16,10 +16,8 @@ export function effectiveCurve(
   star: StarInputs,
   settings: SensitivitySettings,
 ): ContrastCurve {
-  const { smallSample } = settings;
-  let effective = smallSample ? correctForSmallSamples(curve, smallSample.fwhmArcsec) : curve;
-  if (!star.candidates) return effective;
-  const { sources, halfWidthArcsec } = star.candidates;
-  for (const source of sources) effective = cutCurveAt(effective, source, halfWidthArcsec);
-  return effective;
+  const { smallSample, candidates } = settings;
+  const raised = smallSample ? correctForSmallSamples(curve, smallSample.fwhmArcsec) : curve;
+  if (!candidates) return raised;
+  return cutAtCandidates(raised, star.candidates ?? [], candidates.halfWidthArcsec);
 }

@@ -10,7 +10,7 @@ export {
   isInsideLawValidity,
   planckRadiance,
 } from './built-in-law';
-export { cutAtCandidates, cutCurveAt } from './candidate-cut';
+export { cutAtCandidates } from './candidate-cut';
 export {
   type CombinationRule,
   combinationBounds,
@@ -29,6 +29,7 @@ export {
   requireEccentricityLaw,
 } from './eccentricity';
 export { decodeMap, encodeMap } from './encoding';
+export { ageUnder } from './field-age';
 export { eccentricAnomaly, trueAnomaly } from './kepler';
 export { type CompletenessFall, checkCompletenessMap } from './map-checks';
 export { DEFAULT_GRID, requireGrid } from './map-grid';

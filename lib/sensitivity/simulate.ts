@@ -6,6 +6,7 @@ import { detectionProbability } from './contrast';
 import { coolNodes } from './cooling';
 import { distanceAt } from './distance';
 import { eccentricityQuantile } from './eccentricity';
+import { ageUnder } from './field-age';
 import { eccentricAnomaly, trueAnomaly } from './kepler';
 import { prepareStar } from './star-model';
 import type { CoolingRelation, SensitivitySettings, StarInputs } from './types';
@@ -92,7 +93,7 @@ function drawMagnitudes(
   seed: string,
 ): Float64Array[] {
   const { uniform } = createRandom(deriveSeed(seed, 'ages'));
-  const ageAt = ageDraw(star.age);
+  const ageAt = ageDraw(ageUnder(star, settings));
   const ages = new Float64Array(draws).map(() => ageAt(uniform()));
   const policy = { massOutsideTable: settings.massOutsideTable, ageOutsideTable: 'edge' } as const;
   return star.curves.map(

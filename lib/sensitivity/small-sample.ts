@@ -3,6 +3,11 @@ import { normalCumulative } from '@/lib/numerics/normal';
 import { studentQuantileUpper } from '@/lib/numerics/student';
 import type { ContrastCurve } from './types';
 
+/** Curves of one survey share their separations: what was found once serves the next star. */
+const MOST_KNOWN = 8192;
+const known = new Map<number, Map<number, number>>();
+let knownCount = 0;
+
 /** Fewer elements leave no scatter to compare with: nothing can be claimed there. */
 const FEWEST_ELEMENTS = 3;
 /** Between its points the corrected curve departs from the formula by no more than this, [mag]. */
@@ -88,7 +93,17 @@ interface Point {
 
 function shift(logSeparation: number, fwhmArcsec: number, nSigma: number): number {
   const elements = (2 * Math.PI * Math.exp(logSeparation)) / fwhmArcsec;
-  return 2.5 * Math.log10(smallSampleThreshold(elements, nSigma) / nSigma);
+  const found = known.get(nSigma)?.get(elements);
+  if (found !== undefined) return found;
+  const magnitudes = 2.5 * Math.log10(smallSampleThreshold(elements, nSigma) / nSigma);
+  if (knownCount >= MOST_KNOWN) {
+    known.clear();
+    knownCount = 0;
+  }
+  const ofThreshold = known.get(nSigma) ?? new Map<number, number>();
+  known.set(nSigma, ofThreshold.set(elements, magnitudes));
+  knownCount++;
+  return magnitudes;
 }
 
 /** Halves until the middle lies on the straight line, and adds the points found on the way. */
@@ -108,7 +123,7 @@ function addBetween(points: Point[], from: Point, to: Point, limitAt: (y: number
 
 /** The stretch beyond the last place where the limit would be brighter than the star. */
 function fromFirstPositive(points: Point[]): Point[] {
-  const last = points.findLastIndex(({ limit }) => limit < 0);
+  const last = points.map(({ limit }) => limit < 0).lastIndexOf(true);
   if (last < 0) return points;
   if (last === points.length - 1) return [];
   const [a, b] = [points[last], points[last + 1]];

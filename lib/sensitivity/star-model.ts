@@ -4,6 +4,7 @@ import { checkContrastCurve } from './contrast';
 import { coolNodes } from './cooling';
 import { distanceNodes } from './distance';
 import { effectiveCurve } from './effective-curve';
+import { ageUnder } from './field-age';
 import type {
   ContrastCurve,
   CoolingRelation,
@@ -51,7 +52,7 @@ export function prepareStar(
   settings: SensitivitySettings,
 ): PreparedStar {
   const hostMags = apparentMags(star);
-  const ages = ageNodes(star.age, settings.threshold, settings.ageNodesPerSide);
+  const ages = ageNodes(ageUnder(star, settings), settings.threshold, settings.ageNodesPerSide);
   const distances = distanceNodes(star.distance);
   const extinctionMag = star.extinctionMag ?? 0;
   if (!Number.isFinite(extinctionMag)) {

@@ -98,10 +98,12 @@ export interface StarInputs {
   hostMags?: number[];
   /** Extinction in the band, [mag]; default 0. */
   extinctionMag?: number;
+  /** Probability that the age, that of a group, is the star's; used where a field age is set. */
+  membershipProbability?: number;
   /** Used where the settings remove the unstable zone. */
   stellarCompanion?: StellarCompanion;
-  /** Sources at which the sensitivity is cut, see cutAtCandidates. */
-  candidates?: { halfWidthArcsec: number; sources: UnvettedCandidate[] };
+  /** Used where the settings cut the curves at candidates. */
+  candidates?: UnvettedCandidate[];
 }
 
 export interface SensitivitySettings {
@@ -116,6 +118,10 @@ export interface SensitivitySettings {
   smallSample?: { fwhmArcsec: number };
   /** Takes out axes on which a stellar companion lets nothing stay, see unstableZone; absent: kept. */
   unstableZone?: 'remove';
+  /** Cuts the curves at the star's candidates, see cutAtCandidates; absent: they change nothing. */
+  candidates?: { halfWidthArcsec: number };
+  /** Age of a star that does not belong to its group, uniform in log age; absent: all belong. */
+  fieldAge?: { minMyr: number; maxMyr: number };
 }
 
 /** Where a map rests on the edge of its cooling relation, or beyond it. */

@@ -4,7 +4,6 @@ import {
   computeCompletenessMap,
   contrastAt,
   cutAtCandidates,
-  cutCurveAt,
   detectionProbability,
   type SensitivitySettings,
   type UnvettedCandidate,
@@ -37,14 +36,18 @@ function completeness(
     age: { medianMyr: AGE },
     distance: { distancePc: PC, errorPc: 0 },
     curves: [curve],
+    ...(source && { candidates: [source] }),
   });
-  const cut = cutAtCandidates(star, source ? [source] : [], 0.1);
   const grid = {
     massMjup: Float64Array.of(MASS, MASS + 1),
     semiMajorAxisAu: Float64Array.of(axisAu, 2 * axisAu),
   };
-  const settings = buildSettings({ threshold, eccentricity: { law: 'circular' } });
-  return computeCompletenessMap(cut, { kind: 'built-in' }, grid, settings).map.completeness[0];
+  const settings = buildSettings({
+    threshold,
+    eccentricity: { law: 'circular' },
+    candidates: { halfWidthArcsec: 0.1 },
+  });
+  return computeCompletenessMap(star, { kind: 'built-in' }, grid, settings).map.completeness[0];
 }
 
 const between = (from: number, to: number, axisAu: number) =>
@@ -78,6 +81,14 @@ describe('map of a star with an unvetted candidate', () => {
     }
   }
 
+  test('nothing is cut unless the settings say so', () => {
+    const star = buildStar({ candidates: [{ separationArcsec: 1 }] });
+    const grid = { massMjup: Float64Array.of(5, 20), semiMajorAxisAu: Float64Array.of(20, 60) };
+    const map = (one: typeof star) =>
+      computeCompletenessMap(one, { kind: 'built-in' }, grid, buildSettings()).map.completeness;
+    expect([...map(star)]).toEqual([...map(buildStar())]);
+  });
+
   test('one fainter than the limit, or beyond the curve, changes nothing', () => {
     const plain = completeness(limit, null, 'hard', 25);
     const faint = { separationArcsec: 1, contrastMag: limit + 1 };
@@ -90,7 +101,7 @@ describe('curve cut at a candidate', () => {
   const curve = buildCurve();
 
   test('is the fainter of curve and candidate inside and the curve outside', () => {
-    const cut = cutCurveAt(curve, { separationArcsec: 0.6, contrastMag: 12.3 }, 0.2);
+    const cut = cutAtCandidates(curve, [{ separationArcsec: 0.6, contrastMag: 12.3 }], 0.2);
     for (let separation = 0.15; separation <= 4.5; separation *= 1.003) {
       const given = contrastAt(curve, separation)?.contrastMag as number;
       const isInside = separation > 0.4 && separation < 0.8;
@@ -100,26 +111,34 @@ describe('curve cut at a candidate', () => {
   });
 
   test('a candidate at the inner edge moves the edge, one in another band hides its annulus', () => {
-    const inner = cutCurveAt(curve, { separationArcsec: 0.1 }, 0.1);
+    const inner = cutAtCandidates(curve, [{ separationArcsec: 0.1 }], 0.1);
     expect(contrastAt(inner, 0.19)?.coverage).toBe(0);
     expect(contrastAt(inner, 0.21)?.coverage).toBeCloseTo(1, 6);
-    const other = cutCurveAt(curve, { separationArcsec: 1, contrastMag: 9, band: 'J' }, 0.1);
+    const other = cutAtCandidates(curve, [{ separationArcsec: 1, contrastMag: 9, band: 'J' }], 0.1);
     expect(contrastAt(other, 1)?.coverage).toBe(0);
     expect(contrastAt(other, 1)?.contrastMag).toBeCloseTo(13.6, 9);
   });
 
   test('overlapping candidates are each cut', () => {
-    let cut = cutCurveAt(curve, { separationArcsec: 1, contrastMag: 12 }, 0.2);
-    cut = cutCurveAt(cut, { separationArcsec: 1.1, contrastMag: 11 }, 0.2);
+    const cut = cutAtCandidates(
+      curve,
+      [
+        { separationArcsec: 1, contrastMag: 12 },
+        { separationArcsec: 1.1, contrastMag: 11 },
+      ],
+      0.2,
+    );
     expect(contrastAt(cut, 0.85)?.contrastMag).toBeCloseTo(12, 6);
     expect(contrastAt(cut, 1.25)?.contrastMag).toBeCloseTo(11, 6);
     expect(contrastAt(cut, 1.35)?.contrastMag).toBeGreaterThan(13.6);
   });
 
   test('refuses a separation, half-width or contrast outside its domain', () => {
-    expect(() => cutCurveAt(curve, { separationArcsec: 0 }, 0.1)).toThrow(/separationArcsec/);
-    expect(() => cutCurveAt(curve, { separationArcsec: 1 }, 0)).toThrow(/halfWidthArcsec/);
-    expect(() => cutCurveAt(curve, { separationArcsec: 1, contrastMag: -1 }, 0.1)).toThrow(
+    expect(() => cutAtCandidates(curve, [{ separationArcsec: 0 }], 0.1)).toThrow(
+      /separationArcsec/,
+    );
+    expect(() => cutAtCandidates(curve, [{ separationArcsec: 1 }], 0)).toThrow(/halfWidthArcsec/);
+    expect(() => cutAtCandidates(curve, [{ separationArcsec: 1, contrastMag: -1 }], 0.1)).toThrow(
       /contrastMag/,
     );
   });

@@ -32,18 +32,13 @@ describe('simulateCompleteness agrees with the integral within 4 standard errors
     {
       name: 'member of a young group or star of the field, with a candidate cut',
       star: buildStar({
-        age: {
-          mixture: [
-            { probability: 0.7, age: { medianMyr: 24, lowerMyr: 19, upperMyr: 31 } },
-            { probability: 0.3, age: { medianMyr: 1000, minMyr: 200, maxMyr: 5000 } },
-          ],
-        },
-        candidates: {
-          halfWidthArcsec: 0.1,
-          sources: [{ separationArcsec: 0.8, contrastMag: 11 }, { separationArcsec: 2.5 }],
-        },
+        membershipProbability: 0.7,
+        candidates: [{ separationArcsec: 0.8, contrastMag: 11 }, { separationArcsec: 2.5 }],
       }),
-      settings: buildSettings(),
+      settings: buildSettings({
+        candidates: { halfWidthArcsec: 0.1 },
+        fieldAge: { minMyr: 200, maxMyr: 5000 },
+      }),
     },
   ];
   for (const { name, star, settings } of cases) {

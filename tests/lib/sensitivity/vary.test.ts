@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
-import { ageNodes, distanceNodes, varyStar } from '@/lib/sensitivity';
-import { buildCurve, buildStar } from './build-star';
+import { ageNodes, ageUnder, distanceNodes, varyStar } from '@/lib/sensitivity';
+import { buildCurve, buildSettings, buildStar } from './build-star';
 
 describe('varyStar', () => {
   test('ages: median and bounds times the ratio of the quoted point', () => {
@@ -95,5 +95,33 @@ describe('a mixture of ages', () => {
       ],
     };
     expect(() => ageNodes(wrong, 'smooth')).toThrow(/between 0 and 1/);
+  });
+});
+
+describe('age under a field age', () => {
+  const fieldAge = { minMyr: 200, maxMyr: 5000 };
+  const under = (membershipProbability?: number, settings = buildSettings({ fieldAge })) =>
+    ageUnder(buildStar({ membershipProbability }), settings);
+  const own = buildStar().age;
+
+  test('mixes the own age with the field by the probability of membership', () => {
+    expect(under(0.7)).toEqual({
+      mixture: [
+        { probability: 0.7, age: own },
+        { probability: expect.closeTo(0.3, 12), age: { medianMyr: 1000, ...fieldAge } },
+      ],
+    });
+  });
+
+  test('a certain or unstated member keeps its age, and so does every star without the setting', () => {
+    expect(under(1)).toEqual(own);
+    expect(under()).toEqual(own);
+    expect(under(0.7, buildSettings())).toEqual(own);
+  });
+
+  test('refuses a probability or range outside its domain', () => {
+    expect(() => under(1.1)).toThrow(/membershipProbability/);
+    const wrong = buildSettings({ fieldAge: { minMyr: 10, maxMyr: 5 } });
+    expect(() => under(0.5, wrong)).toThrow(/minMyr < maxMyr/);
   });
 });
