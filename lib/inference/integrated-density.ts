@@ -7,39 +7,15 @@ import {
   NODES,
   nodeWeights,
 } from './chebyshev';
+import {
+  isResolved,
+  largestShare,
+  type Panel,
+  resolvePanels,
+  type Stretch,
+} from './density-panels';
 
-/**
- * A piece of the support in a coordinate v, 0..1, in which the density is smooth.
- *
- * Singular ends (x^-1/2 and the like) and wide ranges (log-uniform) become harmless there.
- */
-export interface Stretch {
-  /** Ends of the piece in x. */
-  from: number;
-  to: number;
-  /** True where x falls as v rises: v is then counted from a singular upper end. */
-  isReversed: boolean;
-  toX(v: number): number;
-  toV(x: number): number;
-  /** ln of the unnormalised density per dv at v, 0 < v < 1; -Infinity where it vanishes. */
-  logDensity(v: number): number;
-}
-
-/** A piece of a stretch with the series of its density, relative to the density's peak there. */
-interface Panel {
-  stretch: number;
-  start: number;
-  width: number;
-  /** ln density at its largest node. */
-  peak: number;
-  /**
-   * The same with the panel's ends. For a density with one peak the panel that holds it then has
-   * the largest value of all, however narrow the peak: it is never taken for negligible.
-   */
-  reach: number;
-  values: Float64Array;
-  series: Float64Array;
-}
+export type { Stretch };
 
 interface Resolved {
   stretch: number;
@@ -51,6 +27,14 @@ interface Resolved {
   before: number;
 }
 
+/** A quadrature rule for averages over a density; arrays of one length, shared, not modified. */
+export interface RateNodes {
+  /** Places of the rate, increasing within each piece of the support. */
+  rate: Float64Array;
+  /** Share of the probability at each place; together 1. */
+  weight: Float64Array;
+}
+
 /** A density integrated once: mass, moments, distribution function and its inverse. */
 export interface IntegratedDensity {
   /** ln of the integral of the unnormalised density. */
@@ -59,106 +43,33 @@ export interface IntegratedDensity {
   standardDeviation: number;
   cumulative(x: number): number;
   quantile(p: number): number;
+  /** Places where the density was evaluated, with weights. */
+  nodes(): RateNodes;
+  /**
+   * The same density times a factor, from the places that are there already.
+   *
+   * @param logFactor ln of the factor at each place of `nodes().rate`
+   * @returns null where those places no longer resolve the product
+   */
+  reweigh(logFactor: ArrayLike<number>): IntegratedDensity | null;
 }
 
-/** Series tails below this share of the panel's largest coefficient count as resolved. */
-const RESOLVED = 1e-12;
-/** ln of the share of the whole below which a panel is not refined. */
-const NEGLIGIBLE = Math.log(1e-17);
-/** Sixteen units in the last place. */
-const ROUNDING = 16 * Number.EPSILON;
-const MAX_PANELS = 3000;
+const placeOf = (panel: Pick<Panel, 'start' | 'width'>, j: number) =>
+  panel.start + 0.5 * panel.width * (1 + chebyshevNodes[j]);
 
-function evaluatePanel(stretches: Stretch[], stretch: number, start: number, width: number): Panel {
-  const values = new Float64Array(NODES);
-  let peak = Number.NEGATIVE_INFINITY;
-  for (let j = 0; j < NODES; j++) {
-    const value = stretches[stretch].logDensity(start + 0.5 * width * (1 + chebyshevNodes[j]));
-    if (Number.isNaN(value)) throw new RangeError('the density is not a number inside its support');
-    values[j] = value;
-    if (value > peak) peak = value;
-  }
-  for (let j = 0; j < NODES; j++) {
-    values[j] = values[j] === Number.NEGATIVE_INFINITY ? 0 : Math.exp(values[j] - peak);
-  }
-  let reach = peak;
-  for (const end of [start, start + width]) {
-    const value = stretches[stretch].logDensity(end);
-    if (Number.isFinite(value) && value > reach) reach = value;
-  }
-  return { stretch, start, width, peak, reach, values, series: coefficients(values) };
-}
-
-function isResolved({ start, reach, width, series }: Panel, logBest: number): boolean {
-  const logShare = reach + Math.log(width) - logBest;
-  if (!(logShare >= NEGLIGIBLE)) return true;
-  let largest = 0;
-  for (let k = 0; k < NODES; k++) largest = Math.max(largest, Math.abs(series[k]));
-  const tail = Math.max(
-    Math.abs(series[NODES - 1]),
-    Math.abs(series[NODES - 2]),
-    Math.abs(series[NODES - 3]),
-  );
-  // A short panel far from v = 0 has nodes rounded by this much of its width: no series beats that.
-  const rounding = (ROUNDING * (start + width)) / width;
-  const isExhausted = tail <= Math.max(RESOLVED, rounding) * largest;
-  return isExhausted || Math.log(tail) + logShare < NEGLIGIBLE;
-}
-
-/** Halves panels, breadth first, until each one's Chebyshev series has run out. */
-function refine(stretches: Stretch[]): { panels: Panel[]; peak: number } {
-  let queue = stretches.map((_, index) => evaluatePanel(stretches, index, 0, 1));
-  const done: Panel[] = [];
-  while (queue.length > 0) {
-    // Only the panels of now: a parent may have had a point nearer to the peak than its halves do.
-    const leaves = [...done, ...queue];
-    const logBest = Math.max(...leaves.map(({ reach, width }) => reach + Math.log(width)));
-    if (logBest === Number.NEGATIVE_INFINITY) {
-      throw new RangeError('the density vanishes everywhere');
-    }
-    if (!Number.isFinite(logBest)) {
-      throw new RangeError('the density is infinite inside its support');
-    }
-    const next: Panel[] = [];
-    for (const panel of queue) {
-      const half = 0.5 * panel.width;
-      const canSplit = panel.start + 0.25 * half > panel.start;
-      if (!canSplit || isResolved(panel, logBest)) {
-        done.push(panel);
-      } else {
-        next.push(evaluatePanel(stretches, panel.stretch, panel.start, half));
-        next.push(evaluatePanel(stretches, panel.stretch, panel.start + half, half));
-      }
-    }
-    if (done.length + next.length > MAX_PANELS) {
-      throw new RangeError(`the density was not resolved by ${MAX_PANELS} panels`);
-    }
-    queue = next;
-  }
-  done.sort(
-    (a, b) =>
-      a.stretch - b.stretch ||
-      (stretches[a.stretch].isReversed ? b.start - a.start : a.start - b.start),
-  );
-  return { panels: done, peak: Math.max(...done.map((panel) => panel.peak)) };
-}
-
-/** Integral of f times the density, in units of the density's peak. */
-function sumOverNodes(
-  stretches: Stretch[],
-  panels: Panel[],
-  peak: number,
-  f: (x: number) => number,
-): number {
-  let sum = 0;
-  for (const { stretch, start, width, peak: panelPeak, values } of panels) {
-    const scale = 0.5 * width * Math.exp(panelPeak - peak);
-    for (let j = 0; j < NODES; j++) {
-      const x = stretches[stretch].toX(start + 0.5 * width * (1 + chebyshevNodes[j]));
-      sum += nodeWeights[j] * scale * values[j] * f(x);
-    }
-  }
-  return sum;
+/** A panel's density times a factor given at its nodes. */
+function multiplyPanel(panel: Panel, logFactor: ArrayLike<number>, offset: number): Panel {
+  let rise = Number.NEGATIVE_INFINITY;
+  for (let j = 0; j < NODES; j++) rise = Math.max(rise, logFactor[offset + j]);
+  if (rise === Number.NEGATIVE_INFINITY) rise = 0;
+  const values = panel.values.map((value, j) => value * Math.exp(logFactor[offset + j] - rise));
+  return {
+    ...panel,
+    peak: panel.peak + rise,
+    reach: panel.reach + rise,
+    values,
+    series: coefficients(values),
+  };
 }
 
 /**
@@ -175,7 +86,12 @@ function sumOverNodes(
  * @source antiderivative of a Chebyshev series: Clenshaw & Curtis 1960, Numer. Math. 2, 197
  */
 export function integrateDensity(stretches: Stretch[]): IntegratedDensity {
-  const { panels, peak } = refine(stretches);
+  return integratePanels(stretches, resolvePanels(stretches));
+}
+
+function integratePanels(stretches: Stretch[], panels: Panel[]): IntegratedDensity {
+  let peak = Number.NEGATIVE_INFINITY;
+  for (const panel of panels) peak = Math.max(peak, panel.peak);
   const resolved: Resolved[] = [];
   let total = 0;
   for (const { stretch, start, width, peak: panelPeak, series } of panels) {
@@ -186,11 +102,30 @@ export function integrateDensity(stretches: Stretch[]): IntegratedDensity {
     resolved.push({ stretch, start, width, density, integral, mass, before: total });
     total += mass;
   }
-  const mean = sumOverNodes(stretches, panels, peak, (x) => x) / total;
-  const variance = sumOverNodes(stretches, panels, peak, (x) => (x - mean) ** 2) / total;
 
-  const lowest = stretches[0].from;
-  const highest = stretches[stretches.length - 1].to;
+  let known: RateNodes | undefined;
+  function nodes(): RateNodes {
+    if (known) return known;
+    const rate = new Float64Array(panels.length * NODES);
+    const weight = new Float64Array(panels.length * NODES);
+    panels.forEach((panel, at) => {
+      const { toX } = stretches[panel.stretch];
+      const scale = (0.5 * panel.width * Math.exp(panel.peak - peak)) / total;
+      for (let j = 0; j < NODES; j++) {
+        rate[at * NODES + j] = toX(placeOf(panel, j));
+        weight[at * NODES + j] = nodeWeights[j] * scale * panel.values[j];
+      }
+    });
+    known = { rate, weight };
+    return known;
+  }
+
+  let knownMean: number | undefined;
+  function mean(): number {
+    const { rate, weight } = nodes();
+    knownMean ??= rate.reduce((sum, x, i) => sum + weight[i] * x, 0);
+    return knownMean;
+  }
 
   function findPanel(isBefore: (panel: Resolved) => boolean): Resolved {
     let low = 0;
@@ -203,10 +138,25 @@ export function integrateDensity(stretches: Stretch[]): IntegratedDensity {
     return resolved[low];
   }
 
+  const lowest = stretches[0].from;
+  const highest = stretches[stretches.length - 1].to;
   return {
     logMass: Math.log(total) + peak,
-    mean,
-    standardDeviation: Math.sqrt(variance),
+    get mean() {
+      return mean();
+    },
+    get standardDeviation() {
+      const { rate, weight } = nodes();
+      const centre = mean();
+      return Math.sqrt(rate.reduce((sum, x, i) => sum + weight[i] * (x - centre) ** 2, 0));
+    },
+    nodes,
+    reweigh(logFactor) {
+      const changed = panels.map((panel, at) => multiplyPanel(panel, logFactor, at * NODES));
+      const best = largestShare(changed);
+      const isWhole = changed.every((panel) => isResolved(panel, best));
+      return isWhole ? integratePanels(stretches, changed) : null;
+    },
     cumulative(x) {
       if (!(x > lowest)) return 0;
       if (x >= highest) return 1;
