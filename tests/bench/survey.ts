@@ -5,7 +5,7 @@ import {
   drawCompanions,
   isInside,
   meanCompleteness,
-  type Population,
+  type PowerLawPopulation,
   populationWeights,
   toLogIndex,
 } from '@/lib/population';
@@ -25,7 +25,7 @@ export const SEED = 'invented survey 1';
 export const BAND = 'H';
 export const GRID = DEFAULT_GRID();
 export const COOLING: CoolingRelation = { kind: 'built-in' };
-export const POPULATION: Population = {
+export const POPULATION: PowerLawPopulation = {
   form: 'power-law',
   massMinMjup: 2,
   massMaxMjup: 70,

@@ -38,15 +38,19 @@ function compareRow(check: LiveCheck, row: number, theirs: ProgramAnswer): strin
 const found = await findReferencePrograms();
 const answers = await askPrograms(found, checks);
 
-describe.each(['R', 'SciPy'] as const)('asked of %s', (program) => {
-  const asked = checks.filter((check) => check.program === program && answers.has(check));
-  for (const check of asked) {
-    it(check.name, () => {
-      const theirs = answers.get(check) ?? [];
-      expect(theirs).toHaveLength(check.rows.length);
-      expect(check.rows.length).toBeGreaterThan(0);
-      const differences = theirs.flatMap((answer, row) => compareRow(check, row, answer));
-      expect(differences, check.tolerance.because).toEqual([]);
-    });
-  }
-});
+for (const program of ['R', 'SciPy'] as const) {
+  const asked = checks.filter((check) => check.program === program);
+  // A program that is missing has no answers; the step says so, a suite without tests would fail.
+  if (found[program] === null) continue;
+  describe(`asked of ${program}`, () => {
+    for (const check of asked) {
+      it(check.name, () => {
+        const theirs = answers.get(check) ?? [];
+        expect(theirs).toHaveLength(check.rows.length);
+        expect(check.rows.length).toBeGreaterThan(0);
+        const differences = theirs.flatMap((answer, row) => compareRow(check, row, answer));
+        expect(differences, check.tolerance.because).toEqual([]);
+      });
+    }
+  });
+}
