@@ -16,6 +16,7 @@ import { definePopulation, PopulationRow } from './population';
 import { defineRun, RunRow } from './run';
 import { defineSession, SessionRow } from './session';
 import { defineStar, StarRow } from './star';
+import { defineStudy, StudyRow } from './study';
 import { defineSurvey, SurveyRow } from './survey';
 import { defineTarget, TargetRow } from './target';
 import { defineUpload, UploadRow } from './upload';
@@ -37,6 +38,7 @@ export {
   RunRow,
   SessionRow,
   StarRow,
+  StudyRow,
   SurveyRow,
   TargetRow,
   UploadRow,
@@ -61,6 +63,9 @@ function associate(): void {
   AnalysisRow.belongsTo(AnalysisRow, { as: 'parent', foreignKey: 'parentId' });
   RunRow.belongsTo(AnalysisRow, { as: 'analysis', foreignKey: 'analysisId' });
   RunRow.belongsTo(JobRow, { as: 'job', foreignKey: 'jobId' });
+  RunRow.hasMany(StudyRow, { as: 'studies', foreignKey: 'runId' });
+  StudyRow.belongsTo(RunRow, { as: 'run', foreignKey: 'runId' });
+  StudyRow.belongsTo(JobRow, { as: 'job', foreignKey: 'jobId' });
   AuditEntryRow.belongsTo(PersonRow, { as: 'person', foreignKey: 'personId' });
 }
 
@@ -83,6 +88,7 @@ function defineModels(sequelize: Sequelize): void {
   defineAnalysis(sequelize);
   defineJob(sequelize);
   defineRun(sequelize);
+  defineStudy(sequelize);
   defineAuditEntry(sequelize);
   associate();
 }

@@ -13,7 +13,7 @@ export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled';
 export class JobRow extends Model<InferAttributes<JobRow>, InferCreationAttributes<JobRow>> {
   declare id: CreationOptional<string>;
   declare collaborationId: string;
-  declare kind: 'compute-maps' | 'compute-run';
+  declare kind: 'compute-maps' | 'compute-run' | 'compute-study';
   declare surveyId: CreationOptional<string | null>;
   declare status: CreationOptional<JobStatus>;
   declare payload: CreationOptional<Record<string, unknown>>;

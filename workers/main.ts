@@ -11,10 +11,12 @@ import { perform, type Work } from './perform';
 import { openPool } from './pool';
 import { performComputeMaps } from './tasks/compute-maps';
 import { performComputeRun } from './tasks/compute-run';
+import { performComputeStudy } from './tasks/compute-study';
 
 const tasks: Record<JobKind, (work: Work) => Promise<void>> = {
   'compute-maps': performComputeMaps,
   'compute-run': performComputeRun,
+  'compute-study': performComputeStudy,
 };
 
 /** Jobs at once: one per thread would let many small runs wait behind one survey's maps. */

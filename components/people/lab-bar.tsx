@@ -9,6 +9,7 @@ import { NavLink } from '@/components/ui/nav-link';
 import type { Theme } from '@/components/ui/theme';
 import { ThemeSwitch } from '@/components/ui/theme-switch';
 import { TopBar } from '@/components/ui/top-bar';
+import type { JobView } from '@/lib/schemas/jobs';
 import type { Me } from '@/lib/schemas/people';
 
 interface LabBarProps {
@@ -25,6 +26,11 @@ const initialsOf = (name: string) =>
     .join('')
     .slice(0, 2)
     .toUpperCase();
+
+function wordsOf({ kind, subject }: JobView): string {
+  if (kind === 'compute-maps') return `Maps of ${subject}`;
+  return kind === 'compute-run' ? `Run of ${subject}` : subject;
+}
 
 function RunningJobs({ collaboration }: { collaboration: string }) {
   const jobs = useOpenJobs(collaboration);
@@ -45,12 +51,12 @@ function RunningJobs({ collaboration }: { collaboration: string }) {
         <MenuLink
           key={job.id}
           href={
-            job.kind === 'compute-run'
-              ? `/${collaboration}/analyses/${job.subject}`
-              : `/${collaboration}/surveys`
+            job.kind === 'compute-maps'
+              ? `/${collaboration}/surveys`
+              : `/${collaboration}/analyses/${job.subject.split(',')[0]}`
           }
         >
-          {job.kind === 'compute-run' ? `Run of ${job.subject}` : `Maps of ${job.subject}`}
+          {wordsOf(job)}
           {job.total > 0 && `, ${job.done} of ${job.total}`}
         </MenuLink>
       ))}

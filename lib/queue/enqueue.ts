@@ -96,3 +96,11 @@ export function enqueueRun(
 ): Promise<string> {
   return insertJob(transaction, { ...asked, kind: 'compute-run', surveyId: null, payload: {} });
 }
+
+/** Asks for a study; the study's row, which names the job, is made in the same transaction. */
+export function enqueueStudy(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  return insertJob(transaction, { ...asked, kind: 'compute-study', surveyId: null, payload: {} });
+}

@@ -10,6 +10,8 @@ export const jobKinds = {
   }),
   /** The run that names this job. */
   'compute-run': z.object({}),
+  /** The study that names this job. */
+  'compute-study': z.object({}),
 } as const;
 
 export type JobKind = keyof typeof jobKinds;

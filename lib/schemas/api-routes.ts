@@ -40,6 +40,7 @@ import {
 import { createPopulationSchema, populationSchema } from './populations';
 import { runSchema, runSummarySchema } from './runs';
 import { mapViewSchema } from './sensitivity';
+import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
 import {
   companionSchema,
   coolingTableSchema,
@@ -311,6 +312,22 @@ const analyses: ApiRoute[] = [
   route('get', `${team}/runs/{run}/exports/{file}`, 'read', 'A run as CSV, JSON, LaTeX or SVG', {
     files: ['text/csv', 'application/json', 'application/x-tex', 'image/svg+xml'],
   }),
+  route('get', `${team}/runs/{run}/studies`, 'read', 'Further questions of a run, newest first', {
+    answer: listOf('studies', studySummarySchema),
+  }),
+  route('post', `${team}/runs/{run}/studies`, 'run', 'Ask a finished run a further question', {
+    body: createStudySchema,
+    status: 201,
+    answer: studySummarySchema,
+  }),
+  route('get', `${team}/studies`, 'read', 'Further questions of all runs, newest first', {
+    query: studyQuerySchema,
+    answer: listOf('studies', studySummarySchema),
+  }),
+  route('get', `${team}/studies/{study}`, 'read', 'A further question with its result', {
+    answer: studySchema,
+  }),
+  route('delete', `${team}/studies/{study}`, 'write', 'Delete a further question and its result'),
   route('get', `${team}/jobs`, 'read', 'Jobs, open ones first', {
     answer: listOf('jobs', jobSchema),
   }),

@@ -11,10 +11,17 @@ import { type ApiRoute, apiRoutes } from './api-routes';
 import { auditEntrySchema } from './audit';
 import { jobSchema } from './jobs';
 import { invitationSchema, memberSchema, meSchema, tokenSchema } from './people';
-import { populationDefinitionSchema, populationSchema } from './populations';
+import {
+  listedPopulationSchema,
+  populationDefinitionSchema,
+  populationSchema,
+} from './populations';
 import { faultSchema, problemSchema } from './problem';
 import { runInputsSchema, runResultSchema, runSummarySchema } from './runs';
 import { mapSettingsSchema, mapViewSchema } from './sensitivity';
+import { studySchema, studySummarySchema } from './studies';
+import { studyResultSchema } from './study-results';
+import { studySettingsSchema } from './study-settings';
 import {
   companionSchema,
   coolingTableSchema,
@@ -40,6 +47,7 @@ const named: Record<string, ZodType> = {
   MapSettings: mapSettingsSchema,
   Me: meSchema,
   Member: memberSchema,
+  ListedPopulation: listedPopulationSchema,
   Population: populationSchema,
   PopulationDefinition: populationDefinitionSchema,
   Problem: problemSchema,
@@ -47,6 +55,10 @@ const named: Record<string, ZodType> = {
   RunResult: runResultSchema,
   RunSummary: runSummarySchema,
   Session: sessionSchema,
+  Study: studySchema,
+  StudyResult: studyResultSchema,
+  StudySettings: studySettingsSchema,
+  StudySummary: studySummarySchema,
   Survey: surveySchema,
   Target: targetSchema,
   Token: tokenSchema,

@@ -1,8 +1,8 @@
 import { z } from 'zod';
-import { idSchema, moment } from './common';
+import { idSchema, moment, pageSchema } from './common';
 import { jobSchema } from './jobs';
 import { studyResultSchema } from './study-results';
-import { studySettingsSchema } from './study-settings';
+import { studyKindSchema, studySettingsSchema } from './study-settings';
 
 /** What a study's numbers were made from; its digest is the study's fingerprint. */
 export const studyInputsSchema = z.object({
@@ -17,6 +17,9 @@ export const studyInputsSchema = z.object({
 export type StudyInputs = z.infer<typeof studyInputsSchema>;
 
 export const createStudySchema = studySettingsSchema;
+
+export const studyQuerySchema = pageSchema.extend({ kind: studyKindSchema.optional() });
+export type StudyQuery = z.infer<typeof studyQuerySchema>;
 
 export const studySummarySchema = z.object({
   id: idSchema,

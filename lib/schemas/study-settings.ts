@@ -150,6 +150,18 @@ export const studySettingsSchema = z.discriminatedUnion('kind', [
   forecastSettingsSchema,
   calibrationSettingsSchema,
 ]);
+export const studyKindSchema = z.enum([
+  'free-indices',
+  'limit-map',
+  'sweep',
+  'systematics',
+  'overlap-rules',
+  'influence',
+  'population-comparison',
+  'counts',
+  'forecast',
+  'calibration',
+]);
 export type StudySettings = z.infer<typeof studySettingsSchema>;
 export type StudyKind = StudySettings['kind'];
 export type SettingsOf<Kind extends StudyKind> = Extract<StudySettings, { kind: Kind }>;

@@ -6,26 +6,43 @@ import { requestCancel, retry } from '@/lib/queue/cancel';
 import { timeLeftS } from '@/lib/queue/pace';
 import { idSchema } from '@/lib/schemas/common';
 import type { JobView } from '@/lib/schemas/jobs';
-import { AnalysisRow, database, inTransaction, JobRow, RunRow, SurveyRow } from '@/models';
+import type { StudyKind } from '@/lib/schemas/study-settings';
+import {
+  AnalysisRow,
+  database,
+  inTransaction,
+  JobRow,
+  RunRow,
+  StudyRow,
+  SurveyRow,
+} from '@/models';
 import { recordAudit } from './audit';
+import { studyNames } from './study-words';
 
 interface Subject {
   job_id: string;
   subject: string;
+  kind: StudyKind | null;
 }
 
-/** What each job works on: a survey's name or an analysis's key with the run's number. */
+/** What each job works on: a survey's name or an analysis's key with the run's number and question. */
 async function subjectsOf(jobs: JobRow[]): Promise<Map<string, string>> {
   if (jobs.length === 0) return new Map();
   const rows = await database().query<Subject>(
     `select j.id as job_id,
-       coalesce(s.name, 'A-' || a.number || ', run ' || r.number, '') as subject
+       coalesce(s.name, 'A-' || a.number || ', run ' || r.number, '') as subject, f.kind
      from job j left join survey s on s.id = j.survey_id
-       left join run r on r.job_id = j.id left join analysis a on a.id = r.analysis_id
+       left join study f on f.job_id = j.id left join run r on r.job_id = j.id or r.id = f.run_id
+       left join analysis a on a.id = r.analysis_id
      where j.id = any($1::uuid[])`,
     { bind: [jobs.map(({ id }) => id)], type: QueryTypes.SELECT },
   );
-  return new Map(rows.map((row) => [row.job_id, row.subject]));
+  return new Map(
+    rows.map(({ job_id, subject, kind }) => [
+      job_id,
+      kind === null ? subject : `${subject}: ${studyNames[kind]}`,
+    ]),
+  );
 }
 
 export async function describeJobs(jobs: JobRow[]): Promise<JobView[]> {
@@ -89,12 +106,23 @@ async function demandControl(actor: Actor, job: JobRow): Promise<void> {
     demand(actor, 'import', { isLead: survey.leadId === actor.personId });
     return;
   }
-  const run = await RunRow.findOne({ where: { jobId: job.id }, rejectOnEmpty: true });
+  const study =
+    job.kind === 'compute-study'
+      ? await StudyRow.findOne({ where: { jobId: job.id }, rejectOnEmpty: true })
+      : null;
+  const where = study ? { id: study.runId } : { jobId: job.id };
+  const run = await RunRow.findOne({ where, rejectOnEmpty: true });
   const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });
-  demand(actor, 'run-analysis', { isOwn: analysis.createdBy === actor.personId });
+  const isOwnStudy = study !== null && study.createdBy === actor.personId;
+  const isOwn = isOwnStudy || analysis.createdBy === actor.personId;
+  demand(actor, 'run-analysis', { isOwn });
 }
 
-const actionOf = { 'compute-maps': 'import', 'compute-run': 'run-analysis' } as const;
+const actionOf = {
+  'compute-maps': 'import',
+  'compute-run': 'run-analysis',
+  'compute-study': 'run-analysis',
+} as const;
 
 /** Stops a job: a waiting one at once, a running one within seconds. */
 export async function cancelJob(actor: Actor, id: string): Promise<JobView> {

@@ -7,6 +7,7 @@ const ENTRIES = [
   'workers/main.ts',
   'workers/compute/complete-maps.ts',
   'workers/compute/answer-run.ts',
+  'workers/compute/answer-study.ts',
 ];
 
 /**

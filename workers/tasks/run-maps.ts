@@ -19,7 +19,7 @@ import { type MapToStore, storeMaps } from './map-store';
 import type { Entry, Sample, SampleStar } from './run-sample';
 import { buildStarInputs } from './star-inputs';
 
-type Rule = 'same-position' | 'deepest' | 'independent';
+export type Rule = 'same-position' | 'deepest' | 'independent';
 
 /** Digest of a star's map in this run: its own, or the one combined from its entries. */
 export type MapDigests = Map<string, string>;
@@ -56,7 +56,7 @@ function refuse(code: string, stars: SampleStar[], words: string): void {
 }
 
 /** The rule for one star; explicit rules that a star cannot follow are refused before. */
-function ruleFor({ entries }: SampleStar, asked: AnalysisRecipe['combination']): Rule {
+export function ruleFor({ entries }: SampleStar, asked: AnalysisRecipe['combination']): Rule {
   if (asked === 'deepest' || asked === 'independent' || asked === 'same-position') return asked;
   return entries.every(hasCurve) && isOneRecipe(entries) ? 'same-position' : 'deepest';
 }
@@ -104,9 +104,10 @@ function planCombination(star: SampleStar, rule: Rule, grid: MapGrid): Combinati
   return { star, digest: digestOf(inputs), inputs: { ...inputs, star: star.name }, rule };
 }
 
-const ownCurves = ({ entries }: SampleStar) =>
+export const ownCurves = ({ entries }: Pick<SampleStar, 'entries'>) =>
   entries.flatMap(({ target, curves }) => curves.map((curve) => ({ target, curve })));
-const jointInputs = (star: SampleStar) => buildStarInputs(star.entries[0].target, ownCurves(star));
+export const jointInputs = (star: SampleStar) =>
+  buildStarInputs(star.entries[0].target, ownCurves(star));
 
 /**
  * Sees to it that every star has one map: stars in several surveys get a combined one, which is
@@ -170,13 +171,18 @@ async function combinedMap({ star, digest, inputs, rule }: Combination): Promise
     where: { id: star.entries.map(({ map }) => map.id) },
     order: [['digest', 'ASC']],
   });
+  return { ...combineRows(rows, rule), digest, inputs };
+}
+
+/** Maps of one star put together by a rule that needs no curves, on the union of their nodes. */
+export function combineRows(rows: CompletenessMapRow[], rule: Rule) {
   const maps = rows.map(mapOfRow);
   const combined = rule === 'deepest' ? combineDeepest(maps) : combineIndependent(maps);
   const flagged = new Set(rows.flatMap(flaggedMasses));
   const flaggedMassNodes = [...combined.massMjup.keys()].filter((i) =>
     flagged.has(combined.massMjup[i]),
   );
-  return { ...combined, digest, inputs, report: { flaggedMassNodes } };
+  return { ...combined, report: { flaggedMassNodes } };
 }
 
 /** Masses at which a map rests on the edge of its cooling relation or beyond it. */

@@ -1,0 +1,251 @@
+import { Op, type Transaction, type WhereOptions } from 'sequelize';
+import type { Actor } from '@/lib/access/actor';
+import { demand } from '@/lib/access/permissions';
+import { Conflict, NotFound, TooMany } from '@/lib/errors';
+import { enqueueStudy } from '@/lib/queue/enqueue';
+import { idSchema } from '@/lib/schemas/common';
+import type { StudyQuery, StudySummary, StudyView } from '@/lib/schemas/studies';
+import type { StudySettings } from '@/lib/schemas/study-settings';
+import { ENGINE_VERSION } from '@/lib/sensitivity';
+import { AnalysisRow, inTransaction, JobRow, PersonRow, RunRow, StudyRow } from '@/models';
+import { digestOf } from '@/models/digest';
+import { recordAudit } from './audit';
+import { describeJobs } from './jobs';
+import { findRun } from './runs';
+import { refuseUnanswerable } from './study-checks';
+import { studyNames } from './study-words';
+
+/** Further questions that one person may have waiting or running. */
+const MOST_QUEUED = 20;
+const QUEUE_RETRY_S = 30;
+/** Hexadecimal digits of a seed. */
+const SEED_LENGTH = 16;
+/** Digits that only the view of one study needs stay in the database for lists. */
+const LISTED = { exclude: ['inputs', 'result'] };
+
+async function summarise(rows: StudyRow[]): Promise<StudySummary[]> {
+  if (rows.length === 0) return [];
+  const runs = await RunRow.findAll({
+    attributes: ['id', 'number', 'analysisId'],
+    where: { id: rows.map(({ runId }) => runId) },
+  });
+  const analyses = await AnalysisRow.findAll({
+    where: { id: runs.map(({ analysisId }) => analysisId) },
+  });
+  const people = await PersonRow.findAll({
+    attributes: ['id', 'name'],
+    where: { id: rows.flatMap(({ createdBy }) => createdBy ?? []) },
+  });
+  const jobs = await describeJobs(
+    await JobRow.findAll({ where: { id: rows.map(({ jobId }) => jobId) } }),
+  );
+  const byId = <Row extends { id: string }>(all: Row[]) => new Map(all.map((row) => [row.id, row]));
+  const [runOf, analysisOf, personOf, jobOf] = [
+    byId(runs),
+    byId(analyses),
+    byId(people),
+    byId(jobs),
+  ];
+  return rows.flatMap((row) => {
+    const run = runOf.get(row.runId);
+    const analysis = run && analysisOf.get(run.analysisId);
+    const job = jobOf.get(row.jobId);
+    // Deleted between the statements.
+    if (!run || !analysis || !job) return [];
+    return {
+      id: row.id,
+      number: row.number,
+      settings: row.settings,
+      run: {
+        id: run.id,
+        number: run.number,
+        analysisKey: `A-${analysis.number}`,
+        analysisName: analysis.name,
+      },
+      job,
+      headline: row.headline ?? null,
+      createdBy: personOf.get(row.createdBy ?? '')?.name ?? null,
+      createdAt: row.createdAt.toISOString(),
+      finishedAt: row.finishedAt?.toISOString() ?? null,
+    };
+  });
+}
+
+export async function listStudiesOfRun(
+  actor: Actor,
+  runId: string,
+): Promise<{ studies: StudySummary[] }> {
+  const run = await findRun(actor, runId);
+  const rows = await StudyRow.findAll({
+    attributes: LISTED,
+    where: { runId: run.id },
+    order: [['number', 'DESC']],
+  });
+  return { studies: await summarise(rows) };
+}
+
+export async function listStudies(
+  actor: Actor,
+  { kind, limit, offset }: StudyQuery,
+): Promise<{ studies: StudySummary[] }> {
+  demand(actor, 'read');
+  const where: WhereOptions = { collaborationId: actor.collaborationId, ...(kind && { kind }) };
+  const rows = await StudyRow.findAll({
+    attributes: LISTED,
+    where,
+    order: [
+      ['createdAt', 'DESC'],
+      ['id', 'DESC'],
+    ],
+    limit,
+    offset,
+  });
+  return { studies: await summarise(rows) };
+}
+
+/** A study of this collaboration, or the same "no such question" for absent and foreign. */
+async function findStudy(actor: Actor, id: string): Promise<StudyRow> {
+  demand(actor, 'read');
+  const isId = idSchema.safeParse(id).success;
+  const study = isId
+    ? await StudyRow.findOne({ where: { id, collaborationId: actor.collaborationId } })
+    : null;
+  if (!study) throw new NotFound('further question');
+  return study;
+}
+
+export async function getStudy(actor: Actor, id: string): Promise<StudyView> {
+  const study = await findStudy(actor, id);
+  const [summary] = await summarise([study]);
+  if (!summary) throw new NotFound('further question');
+  const { recipe } = await RunRow.findByPk(study.runId, {
+    attributes: ['recipe'],
+    rejectOnEmpty: true,
+  });
+  return {
+    ...summary,
+    quantity: recipe.likelihood === 'host-fraction' ? 'host_fraction' : 'companions_per_star',
+    credibleLevel: recipe.credibleLevel,
+    seed: study.seed,
+    engineVersion: study.engineVersion,
+    inputs: study.inputs,
+    inputsDigest: study.inputsDigest,
+    result: study.result,
+    resultDigest: study.resultDigest,
+  };
+}
+
+async function refuseCrowd(actor: Actor, transaction: Transaction): Promise<void> {
+  const queued = await JobRow.count({
+    where: {
+      requestedBy: actor.personId,
+      kind: 'compute-study',
+      status: ['waiting', 'running'],
+    },
+    transaction,
+  });
+  if (queued < MOST_QUEUED) return;
+  const message = `You have ${queued} further questions on their way; ${MOST_QUEUED} are the most. Wait for one to end`;
+  throw new TooMany(message, QUEUE_RETRY_S);
+}
+
+/** The study that answers these settings already, or will. */
+async function findEqual(
+  runId: string,
+  settingsDigest: string,
+  transaction: Transaction,
+): Promise<StudyRow | null> {
+  const equal = await StudyRow.findAll({
+    attributes: LISTED,
+    where: { runId, settingsDigest, engineVersion: ENGINE_VERSION },
+    order: [['number', 'DESC']],
+    transaction,
+  });
+  const jobs = await JobRow.findAll({
+    attributes: ['id'],
+    where: {
+      id: equal.map(({ jobId }) => jobId),
+      status: { [Op.notIn]: ['failed', 'cancelled'] },
+    },
+    transaction,
+  });
+  const live = new Set(jobs.map(({ id }) => id));
+  return equal.find(({ jobId }) => live.has(jobId)) ?? null;
+}
+
+/** The run's numbers and the question: the same question draws the same random numbers. */
+function seedOf(run: RunRow, settings: StudySettings): string {
+  if (settings.kind === 'calibration' && settings.seed !== undefined) return settings.seed;
+  return digestOf({ run: run.resultDigest, settings }).slice(0, SEED_LENGTH);
+}
+
+/**
+ * Queues a further question of a finished run; row and job are made together or not at all. Settings
+ * that were asked before give the study that is there, unless it failed or was stopped.
+ */
+export async function startStudy(
+  actor: Actor,
+  runId: string,
+  settings: StudySettings,
+): Promise<StudySummary> {
+  const run = await findRun(actor, runId);
+  const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });
+  // A forecast changes nothing of the analysis: everybody may make one of their own.
+  const isOwn = settings.kind === 'forecast' || analysis.createdBy === actor.personId;
+  demand(actor, 'run-analysis', { isOwn });
+  const study = await inTransaction(async (transaction) => {
+    // One question after the other gets its number, and equal ones find each other.
+    await run.reload({ transaction, lock: transaction.LOCK.UPDATE });
+    if (!run.result) throw new Conflict('The run has no result yet: wait until it has ended');
+    const settingsDigest = digestOf(settings);
+    const equal = await findEqual(run.id, settingsDigest, transaction);
+    if (equal) return equal;
+    await refuseCrowd(actor, transaction);
+    await refuseUnanswerable(run, settings, transaction);
+    const { collaborationId } = actor;
+    const where = { runId: run.id };
+    const last = await StudyRow.max<number, StudyRow>('number', { where, transaction });
+    const asked = { collaborationId, requestedBy: actor.personId };
+    const row = await StudyRow.create(
+      {
+        collaborationId,
+        runId: run.id,
+        number: (last ?? 0) + 1,
+        jobId: await enqueueStudy(transaction, asked),
+        kind: settings.kind,
+        settings,
+        settingsDigest,
+        seed: seedOf(run, settings),
+        engineVersion: ENGINE_VERSION,
+        createdBy: actor.personId,
+      },
+      { transaction },
+    );
+    const summary = `asked "${studyNames[settings.kind]}" of A-${analysis.number}, run ${run.number}`;
+    await recordAudit(actor, 'run-analysis', { kind: 'study', id: row.id }, summary, transaction);
+    return row;
+  });
+  const [summary] = await summarise([study]);
+  if (!summary) throw new NotFound('further question');
+  return summary;
+}
+
+/** Deletes a study and its job; one that is being computed is stopped first, by its own verb. */
+export async function removeStudy(actor: Actor, id: string): Promise<void> {
+  const study = await findStudy(actor, id);
+  demand(actor, 'run-analysis', { isOwn: study.createdBy === actor.personId });
+  await inTransaction(async (transaction) => {
+    const job = await JobRow.findByPk(study.jobId, {
+      transaction,
+      lock: transaction.LOCK.UPDATE,
+      rejectOnEmpty: true,
+    });
+    if (job.status === 'waiting' || job.status === 'running') {
+      throw new Conflict('It is still being computed: stop it before you delete it');
+    }
+    await study.destroy({ transaction });
+    await job.destroy({ transaction });
+    const summary = `deleted "${studyNames[study.kind]}"`;
+    await recordAudit(actor, 'run-analysis', { kind: 'study', id }, summary, transaction);
+  });
+}

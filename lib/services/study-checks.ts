@@ -1,0 +1,208 @@
+import type { Transaction } from 'sequelize';
+import { InputError } from '@/lib/errors';
+import type { Population } from '@/lib/population';
+import type { RatePriorInput } from '@/lib/schemas/analyses';
+import type { RunInputs } from '@/lib/schemas/runs';
+import type { SettingsOf, StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { CoolingTableRow, PopulationRow, type RunRow, SurveyRow } from '@/models';
+
+interface Asked<Kind extends StudyKind> {
+  run: RunRow;
+  inputs: RunInputs;
+  settings: SettingsOf<Kind>;
+  population: Population;
+  transaction: Transaction;
+}
+type Check<Kind extends StudyKind> = (asked: Asked<Kind>) => Promise<void> | void;
+
+function refuse(item: string, message: string, code = 'not-allowed-here'): never {
+  throw new InputError({ code, item, message });
+}
+
+/** A rate that the run's quantity can have. */
+function checkRate(run: RunRow, item: string, rate: number | undefined): void {
+  if (rate === undefined || rate <= 1 || run.recipe.likelihood === 'mean-number') return;
+  refuse(item, `Found ${rate}; expected at most 1 for a fraction of stars`, 'out-of-range');
+}
+
+async function checkPopulations(
+  { collaborationId }: RunRow,
+  ids: string[],
+  item: (index: number) => string,
+  transaction: Transaction,
+): Promise<void> {
+  const rows = await PopulationRow.findAll({
+    attributes: ['id'],
+    where: { collaborationId, id: ids },
+    transaction,
+  });
+  const known = new Set(rows.map(({ id }) => id));
+  const unknown = ids.findIndex((id) => !known.has(id));
+  if (unknown >= 0) refuse(item(unknown), 'There is no such population', 'choice-unknown');
+}
+
+function isProper(prior: RatePriorInput, likelihood: string): boolean {
+  if (prior.law === 'jeffreys') return likelihood === 'host-fraction' || prior.max !== undefined;
+  return prior.law !== 'gamma' || prior.rate > 0;
+}
+
+const indicesOnly = ['mass-index', 'semi-major-axis-index', 'both-indices'];
+
+const checks: { [Kind in StudyKind]?: Check<Kind> } = {
+  'free-indices': ({ population }) => {
+    if (population.form === 'power-law') return;
+    refuse(
+      'kind',
+      'Free indices need a population that is a power law in mass and semi-major axis: ' +
+        'run the analysis with one',
+    );
+  },
+
+  sweep: ({ settings: { over, from, to }, population }) => {
+    if (population.form !== 'power-law') {
+      refuse(
+        'over',
+        'The limit against a cutoff or an index needs a population that is a power law in mass ' +
+          'and semi-major axis: run the analysis with one',
+      );
+    }
+    if (indicesOnly.includes(over)) {
+      if (from < -10 || to > 10) refuse('from', 'Indices lie between -10 and 10', 'out-of-range');
+      return;
+    }
+    if (from <= 0) refuse('from', `Found ${from}; expected more than 0`, 'out-of-range');
+    const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } = population;
+    const ends = {
+      'mass-min': { end: to, edge: massMaxMjup, below: true, item: 'to', unit: 'MJ' },
+      'mass-max': { end: from, edge: massMinMjup, below: false, item: 'from', unit: 'MJ' },
+      'semi-major-axis-min': {
+        end: to,
+        edge: semiMajorAxisMaxAu,
+        below: true,
+        item: 'to',
+        unit: 'AU',
+      },
+      'semi-major-axis-max': {
+        end: from,
+        edge: semiMajorAxisMinAu,
+        below: false,
+        item: 'from',
+        unit: 'AU',
+      },
+    }[over as 'mass-min'];
+    const { end, edge, below, item, unit } = ends;
+    if (below ? end < edge : end > edge) return;
+    const side = below ? 'less than the upper' : 'more than the lower';
+    refuse(item, `Found ${end}; expected ${side} end of the range, ${edge} ${unit}`, 'range-order');
+  },
+
+  systematics: async ({ run, inputs, settings, transaction }) => {
+    const { changes = [] } = settings;
+    for (const [i, change] of changes.entries()) {
+      if (change.change === 'combination' && !sharesStars(inputs)) {
+        refuse(`changes.${i}`, 'No star of this run is in several surveys');
+      }
+      if (change.change !== 'cooling' || change.coolingTableId === null) continue;
+      const table = await CoolingTableRow.findOne({
+        attributes: ['id'],
+        where: { id: change.coolingTableId, collaborationId: run.collaborationId },
+        transaction,
+      });
+      if (table) continue;
+      refuse(`changes.${i}.coolingTableId`, 'There is no such cooling table', 'choice-unknown');
+    }
+  },
+
+  'overlap-rules': ({ inputs }) => {
+    if (!sharesStars(inputs)) refuse('kind', 'No star of this run is in several surveys');
+  },
+
+  'population-comparison': ({ run, settings, transaction }) =>
+    checkPopulations(run, settings.populationIds, (i) => `populationIds.${i}`, transaction),
+
+  counts: ({ run, settings }) => checkRate(run, 'rate', settings.rate),
+
+  forecast: async ({ run, inputs, settings, transaction }) => {
+    checkRate(run, 'assumedRate', settings.assumedRate);
+    checkRate(run, 'wantedLimit', settings.wantedLimit);
+    const { planned } = settings;
+    if (planned.kind === 'stars-like-these') {
+      const own = new Set(inputs.surveys.map(({ id }) => id));
+      const unknown = planned.surveyIds?.findIndex((id) => !own.has(id)) ?? -1;
+      if (unknown >= 0) {
+        refuse(`planned.surveyIds.${unknown}`, 'Not a survey of this run', 'choice-unknown');
+      }
+      return;
+    }
+    checkCurve(planned.curve);
+    const survey = await SurveyRow.findByPk(inputs.surveys[0].id, {
+      attributes: ['id'],
+      transaction,
+    });
+    if (!survey)
+      refuse('planned', 'The survey whose map settings would hold is not there any more');
+  },
+
+  calibration: async ({ run, settings, transaction }) => {
+    const { prior, likelihood } = run.recipe;
+    if (!isProper(prior, likelihood)) {
+      refuse(
+        'kind',
+        'Calibration draws rates from the prior, and this prior has no end: give it a maximum',
+      );
+    }
+    for (const [i, rate] of (settings.truths ?? []).entries()) checkRate(run, `truths.${i}`, rate);
+    if (settings.truthPopulationId === undefined) return;
+    await checkPopulations(
+      run,
+      [settings.truthPopulationId],
+      () => 'truthPopulationId',
+      transaction,
+    );
+  },
+};
+
+const sharesStars = ({ stars }: RunInputs) => stars.some(({ surveys }) => surveys.length > 1);
+
+function checkCurve(curve: { separationArcsec: number[]; contrastMag: number[] }): void {
+  const { separationArcsec, contrastMag } = curve;
+  if (separationArcsec.length !== contrastMag.length) {
+    refuse(
+      'planned.curve.contrastMag',
+      `Found ${contrastMag.length} entries; expected one for each of ${separationArcsec.length} separations`,
+      'too-few',
+    );
+  }
+  const fall = separationArcsec.findIndex((x, i) => i > 0 && x <= separationArcsec[i - 1]);
+  if (fall < 0) return;
+  refuse(
+    `planned.curve.separationArcsec.${fall}`,
+    'Expected increasing separations',
+    'range-order',
+  );
+}
+
+/**
+ * What can be refused before anything is queued.
+ *
+ * @throws InputError whose fault names the place in the settings
+ */
+export async function refuseUnanswerable(
+  run: RunRow,
+  settings: StudySettings,
+  transaction: Transaction,
+): Promise<void> {
+  const population = await PopulationRow.findOne({
+    where: { id: run.recipe.populationId, collaborationId: run.collaborationId },
+    transaction,
+    rejectOnEmpty: true,
+  });
+  const check = checks[settings.kind] as Check<StudyKind> | undefined;
+  await check?.({
+    run,
+    inputs: run.inputs as RunInputs,
+    settings,
+    population: population.definition,
+    transaction,
+  });
+}

@@ -1,0 +1,27 @@
+import { answerInfluence, type InfluenceInput, type InfluenceOutput } from '../answers/influence';
+import { answerLimit, type LimitOutput } from '../answers/limit';
+import type { RunQuestion } from '../answers/run-question';
+
+/** Every part of a study that a thread performs, by name. */
+export interface StudyTasks {
+  limit: { input: RunQuestion; output: LimitOutput };
+  influence: { input: InfluenceInput; output: InfluenceOutput };
+}
+
+type Answers = {
+  [Name in keyof StudyTasks]: (input: StudyTasks[Name]['input']) => StudyTasks[Name]['output'];
+};
+
+const answers: Answers = {
+  limit: answerLimit,
+  influence: answerInfluence,
+};
+
+export type StudyTask = {
+  [Name in keyof StudyTasks]: { name: Name; input: StudyTasks[Name]['input'] };
+}[keyof StudyTasks];
+export type StudyAnswer = StudyTasks[keyof StudyTasks]['output'];
+
+export default function answerStudy({ name, input }: StudyTask): StudyAnswer {
+  return (answers[name] as (input: unknown) => StudyAnswer)(input);
+}

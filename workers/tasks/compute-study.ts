@@ -1,0 +1,68 @@
+import { complete, hold, reportProgress } from '@/lib/queue/attempt';
+import { type StudyInputs, studyInputsSchema } from '@/lib/schemas/studies';
+import { type StudyResult, studyResultSchema } from '@/lib/schemas/study-results';
+import type { StudyKind } from '@/lib/schemas/study-settings';
+import { inTransaction, RunRow } from '@/models';
+import { digestOf } from '@/models/digest';
+import type { Work } from '../perform';
+import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
+import { performInfluence } from './study-influence';
+import { performOverlapRules } from './study-overlap-rules';
+import { performSystematics } from './study-systematics';
+import { headlineOf } from './study-words';
+
+const studyKinds: { [Kind in StudyKind]?: StudyPerformer<Kind> } = {
+  influence: performInfluence,
+  'overlap-rules': performOverlapRules,
+  systematics: performSystematics,
+};
+
+/**
+ * Computes a further question of a finished run. The result is stored once, in the transaction that
+ * ends the job, by the attempt that holds it.
+ */
+export async function performComputeStudy(work: Work): Promise<void> {
+  await reportProgress(work.attempt, 'collect', 0, 1);
+  const given = await openStudy(work);
+  const { settings } = given.study;
+  const perform = studyKinds[settings.kind] as StudyPerformer<StudyKind>;
+  const result = studyResultSchema.parse(await perform(given, settings));
+  await given.report('store', 0, 1);
+  await store(given, result);
+}
+
+async function describeInputs({ study, run, further }: StudyWork): Promise<StudyInputs> {
+  const row = await RunRow.findByPk(run.id, {
+    attributes: ['inputsDigest', 'resultDigest'],
+    rejectOnEmpty: true,
+  });
+  return studyInputsSchema.parse({
+    engineVersion: study.engineVersion,
+    seed: study.seed,
+    runId: run.id,
+    runInputsDigest: row.inputsDigest,
+    runResultDigest: row.resultDigest,
+    further: [...further].sort((a, b) => (a.what < b.what ? -1 : a.what > b.what ? 1 : 0)),
+  });
+}
+
+async function store(given: StudyWork, result: StudyResult): Promise<void> {
+  const { work, study, run } = given;
+  const inputs = await describeInputs(given);
+  await inTransaction(async (transaction) => {
+    await hold(transaction, work.attempt);
+    await study.update(
+      {
+        inputs,
+        inputsDigest: digestOf({ settings: study.settings, inputs }),
+        result,
+        resultDigest: digestOf(result),
+        headline: headlineOf(result, run.result.quantity),
+        finishedAt: new Date(),
+      },
+      { transaction },
+    );
+    await reportProgress(work.attempt, 'store', 1, 1, transaction);
+    await complete(transaction, work.attempt);
+  });
+}

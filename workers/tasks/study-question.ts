@@ -1,0 +1,68 @@
+import type { MeasuredDetection } from '@/lib/inference/measured-places';
+import type { Population } from '@/lib/population';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import type { DetectionView, RunInputs } from '@/lib/schemas/runs';
+import type { MapGrid } from '@/lib/sensitivity';
+import type { OpenCandidate, RunQuestion } from '../answers/run-question';
+
+export type { RunQuestion } from '../answers/run-question';
+
+interface Parts {
+  maps: Uint16Array;
+  grid: MapGrid;
+  population: Population;
+  recipe: AnalysisRecipe;
+  inputs: RunInputs;
+}
+
+function measured(value: number, errors: [number, number] | null) {
+  if (errors === null || (errors[0] === 0 && errors[1] === 0)) return { value };
+  const [lower, upper] = errors;
+  // A log-normal law has no room for an error as large as the value itself.
+  return { value, lower: lower < value ? value - lower : undefined, upper: value + upper };
+}
+
+function asDetection(found: DetectionView, star: number): MeasuredDetection {
+  const { name, massMjup, semiMajorAxisAu } = found;
+  return {
+    name,
+    star,
+    massMjup,
+    semiMajorAxisAu,
+    measurement: {
+      kind: 'values',
+      mass: measured(massMjup, found.massErrorsMjup),
+      semiMajorAxis: measured(semiMajorAxisAu, found.semiMajorAxisErrorsAu),
+    },
+  };
+}
+
+function openCandidates(inputs: RunInputs): OpenCandidate[] {
+  return inputs.undecided.flatMap(({ name, starId, probability, massMjup, semiMajorAxisAu }) => {
+    const star = inputs.stars.findIndex((one) => one.starId === starId);
+    if (star < 0 || probability == null || massMjup == null || semiMajorAxisAu == null) return [];
+    return { name, star, probability, massMjup, semiMajorAxisAu };
+  });
+}
+
+/** The question of a run as its stored inputs and its own copy of the recipe state it. */
+export function questionOf(parts: Parts): RunQuestion {
+  const { maps, grid, population, recipe, inputs } = parts;
+  const confirmed = recipe.detections === 'none' ? [] : inputs.companions;
+  const starOf = new Map(inputs.stars.map(({ starId }, i) => [starId, i]));
+  return {
+    maps,
+    grid,
+    population,
+    hostMassMsun: Float64Array.from(inputs.stars, ({ hostMassMsun }) => hostMassMsun ?? Number.NaN),
+    likelihood: recipe.likelihood,
+    prior: recipe.prior,
+    level: recipe.credibleLevel,
+    detections: confirmed.flatMap((found) => {
+      const star = starOf.get(found.starId);
+      return star === undefined ? [] : asDetection(found, star);
+    }),
+    candidates: recipe.candidates ? { ...recipe.candidates, open: openCandidates(inputs) } : null,
+    background: recipe.background ?? null,
+  };
+}
