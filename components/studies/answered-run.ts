@@ -3,7 +3,7 @@
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import type { AnalysisView } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { ResultOf } from '@/lib/schemas/study-results';
@@ -14,7 +14,7 @@ interface RunAndPopulation {
   collaboration: string;
   analysis: AnalysisView;
   run: RunView;
-  definition: PopulationView | null;
+  definition: ListedPopulation | null;
 }
 
 /** A run with what questions of it need, or undefined while it has no result. */
@@ -39,7 +39,7 @@ interface AnsweredRunOptions {
   analysis: AnalysisView;
   /** The newest finished run and its population, which are at hand. */
   run: RunView | null;
-  runPopulation: PopulationView | null;
+  runPopulation: ListedPopulation | null;
   study: StudyView | undefined;
 }
 

@@ -2,6 +2,7 @@ import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { countsInWords } from './counts/counts-words';
 import type { KindEntry } from './kind-entry';
+import { limitMapInWords } from './limit-map/limit-map-words';
 
 const AnswerWaits = () => (
   <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
@@ -18,6 +19,15 @@ const whileForm = { loading: FormWaits };
 
 /** Each kind brings its form, its answer and its numbers; a page loads those of one kind. */
 export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
+  'limit-map': {
+    Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, whileForm),
+    Answer: dynamic(
+      async () => (await import('./limit-map/limit-map-answer')).LimitMapAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: limitMapInWords,
+    loadTables: async () => (await import('./limit-map/limit-map-tables')).limitMapTables,
+  },
   counts: {
     Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, whileForm),
     Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer, whileAnswer),

@@ -11,7 +11,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { StudySummary } from '@/lib/schemas/studies';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
@@ -29,7 +29,7 @@ export interface StudyPageProps<Kind extends StudyKind> {
   analysis: AnalysisView;
   /** Newest finished run; null while there is none. */
   run: RunView | null;
-  runPopulation: PopulationView | null;
+  runPopulation: ListedPopulation | null;
   /** The answer that the address names. */
   answerId?: string;
 }
