@@ -31,6 +31,26 @@ export const mapSettingsSchema = z.strictObject({
   ageOutsideTable: z.enum(['refuse', 'edge']).default('refuse'),
   /** Age nodes on each side of the median: more for stars with wide ages; 5 (smooth) or 10 (hard) if absent. */
   ageNodesPerSide: z.number().int().min(5).max(80).optional(),
+  /** Raises the limits close to the star for its few resolution elements; null: curves as given. */
+  smallSample: z
+    .strictObject({ fwhmArcsec: positiveSchema.max(10) })
+    .nullable()
+    .default(null),
+  /** Semi-major axes on which a listed stellar companion lets nothing stay: completeness 0 there. */
+  unstableZone: z.enum(['ignore', 'remove']).default('ignore'),
+  /** Candidates and ambiguous companions: cut the curves where they lie, or leave them alone. */
+  candidates: z.enum(['ignore', 'cut']).default('ignore'),
+  /** Half-width of the annulus that a candidate cuts. */
+  candidateHalfWidthArcsec: positiveSchema.max(10).default(0.1),
+  /** Age, uniform in its logarithm, of a star outside the group whose member it may be. */
+  fieldAge: z
+    .strictObject({
+      minMyr: positiveSchema.max(13_800),
+      maxMyr: positiveSchema.max(13_800),
+    })
+    .refine((age) => age.minMyr < age.maxMyr, { path: ['minMyr'], error: 'minMyr below maxMyr' })
+    .nullable()
+    .default(null),
   massMjup: axisRangeSchema.default({ min: 0.5, max: 80, count: 56 }),
   semiMajorAxisAu: axisRangeSchema.default({ min: 1, max: 1000, count: 64 }),
 });

@@ -4,6 +4,7 @@ import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { Conflict, NotFound } from '@/lib/errors';
 import { logSpacedAxis } from '@/lib/numerics/grid';
+import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
 import type {
   createSurveySchema,
   SurveyList,
@@ -143,7 +144,8 @@ async function describeSurvey(actor: Actor, row: SurveyRow, counts?: Counts): Pr
     lead: lead && { id: lead.id, name: lead.name },
     position: row.position,
     isArchived: row.archivedAt !== null,
-    mapSettings: row.mapSettings,
+    // Settings stored earlier lack the rules that came later.
+    mapSettings: mapSettingsSchema.parse(row.mapSettings),
     targets: lookup('targets'),
     alsoInAnother: lookup('shared'),
     curves: lookup('curves'),

@@ -3,6 +3,7 @@ import { Op } from 'sequelize';
 import type { StarInputs } from '@/lib/sensitivity';
 import { CompletenessMapRow, ContrastCurveRow, SurveyRow, TargetRow } from '@/models';
 import { loadRecipe, type MapRecipe, mapDigest, mapInputs } from './map-recipe';
+import { openCandidates } from './star-facts';
 import { buildStarInputs, MissingInput } from './star-inputs';
 
 /** A map that a target should have. */
@@ -57,6 +58,7 @@ export async function planMaps(
   const recipe = await loadRecipe(collaborationId, survey.mapSettings, transaction);
   const targets = await TargetRow.findAll({
     where: { surveyId, ...(targetIds && { id: targetIds }) },
+    include: [openCandidates()],
     order: [
       ['foldedName', 'ASC'],
       ['id', 'ASC'],

@@ -11,6 +11,7 @@ import {
 } from '@/lib/sensitivity';
 import { CoolingTableRow } from '@/models';
 import { digestOf } from '@/models/digest';
+import { requireFacts } from './star-facts';
 import type { OwnCurve } from './star-inputs';
 
 /** How a survey's curves become maps: its settings with the cooling relation that they name. */
@@ -72,27 +73,46 @@ async function loadCooling(
   };
 }
 
+/** The rules of a survey for the engine; what is switched off is absent, so that digests stay. */
+function rulesOf(given: MapSettings): SensitivitySettings {
+  const { eccentricity, threshold, massOutsideTable, ageOutsideTable, ageNodesPerSide } = given;
+  const { smallSample, unstableZone, candidates, candidateHalfWidthArcsec, fieldAge } = given;
+  return {
+    eccentricity,
+    threshold,
+    massOutsideTable,
+    ageOutsideTable,
+    ...(ageNodesPerSide !== undefined && { ageNodesPerSide }),
+    // Settings stored before there was such a rule do not hold it.
+    ...(smallSample && { smallSample }),
+    ...(unstableZone === 'remove' && { unstableZone }),
+    ...(candidates === 'cut' && { candidates: { halfWidthArcsec: candidateHalfWidthArcsec } }),
+    ...(fieldAge && { fieldAge }),
+  };
+}
+
 export async function loadRecipe(
   collaborationId: string,
   settings: MapSettings,
   transaction?: Transaction,
 ): Promise<MapRecipe> {
-  const { eccentricity, threshold, massOutsideTable, ageOutsideTable, ageNodesPerSide } = settings;
   return {
     grid: gridOf(settings),
-    settings: {
-      eccentricity,
-      threshold,
-      massOutsideTable,
-      ageOutsideTable,
-      ...(ageNodesPerSide === undefined ? {} : { ageNodesPerSide }),
-    },
+    settings: rulesOf(settings),
     ...(await loadCooling(collaborationId, settings, transaction)),
   };
 }
 
-/** Everything that a map's values follow from; its digest is the map's. */
+/**
+ * Everything that a map's values follow from; its digest is the map's. A fact of the star stands
+ * here only where a rule uses it.
+ *
+ * @throws MissingInput for a fact that a rule needs and the tables hold half of
+ */
 export function mapInputs(star: StarInputs, ownCurves: OwnCurve[], recipe: MapRecipe) {
+  const { candidates, fieldAge, unstableZone } = recipe.settings;
+  const { candidates: sources, membershipProbability, stellarCompanion } = star;
+  requireFacts(ownCurves, recipe.settings);
   return {
     kind: 'computed',
     engineVersion: ENGINE_VERSION,
@@ -100,6 +120,9 @@ export function mapInputs(star: StarInputs, ownCurves: OwnCurve[], recipe: MapRe
     hostMags: star.hostMags,
     age: star.age,
     distance: star.distance,
+    ...(fieldAge && membershipProbability !== undefined && { membershipProbability }),
+    ...(unstableZone && stellarCompanion && { stellarCompanion }),
+    ...(candidates && sources && { candidates: sources }),
     cooling: recipe.coolingDigest,
     settings: recipe.settings,
     grid: recipe.grid,

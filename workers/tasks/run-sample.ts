@@ -4,6 +4,7 @@ import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
 import type { RunInputs } from '@/lib/schemas/runs';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
 import { loadRecipe, type MapRecipe } from './map-recipe';
+import { openCandidates } from './star-facts';
 
 /** A survey of the run with the recipe of its maps. */
 export interface SampleSurvey {
@@ -65,7 +66,7 @@ async function loadSurveys(
 async function loadTargets(surveyIds: string[], transaction: Transaction) {
   const targets = (await TargetRow.findAll({
     where: { surveyId: surveyIds },
-    include: [{ model: StarRow, as: 'star' }],
+    include: [{ model: StarRow, as: 'star' }, openCandidates()],
     transaction,
   })) as LoadedTarget[];
   const maps = await CompletenessMapRow.findAll({

@@ -1,6 +1,6 @@
 import { formatPlain } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import type { EccentricityLaw } from '@/lib/sensitivity';
+import type { EccentricityLaw, SensitivitySettings } from '@/lib/sensitivity';
 import type { Sample } from './run-sample';
 
 export function describeEccentricity(law: EccentricityLaw): string {
@@ -22,6 +22,33 @@ const thresholds = {
   hard: 'seen at or above the contrast limit, never below it',
   smooth: 'chance to be seen rises through one half at the contrast limit, Gaussian noise',
 };
+
+/** The threshold, and every rule beside it that changes what a curve says. */
+export function describeDetection(settings: SensitivitySettings): string {
+  const { smallSample, unstableZone, candidates, fieldAge, threshold } = settings;
+  const parts = [thresholds[threshold]];
+  if (smallSample) {
+    parts.push(
+      `limits near the star raised for few resolution elements of ${formatPlain(smallSample.fwhmArcsec)} arcsec (Mawet et al. 2014)`,
+    );
+  }
+  if (candidates) {
+    parts.push(
+      `curves cut within ${formatPlain(candidates.halfWidthArcsec)} arcsec of candidates without an answer`,
+    );
+  }
+  if (unstableZone) {
+    parts.push(
+      'semi-major axes that a listed stellar companion makes unstable taken out (Holman & Wiegert 1999)',
+    );
+  }
+  if (fieldAge) {
+    parts.push(
+      `stars outside their group, by its membership probability, ${formatPlain(fieldAge.minMyr)} to ${formatPlain(fieldAge.maxMyr)} Myr old`,
+    );
+  }
+  return parts.join('; ');
+}
 
 const UPLOADED = 'as in the uploaded maps';
 
@@ -49,7 +76,7 @@ export function describeMaps(sample: Sample) {
     eccentricity: perSurvey(sample, ({ recipe }) =>
       describeEccentricity(recipe.settings.eccentricity),
     ),
-    threshold: perSurvey(sample, ({ recipe }) => thresholds[recipe.settings.threshold]),
+    threshold: perSurvey(sample, ({ recipe }) => describeDetection(recipe.settings)),
   };
 }
 

@@ -1,8 +1,10 @@
 import type { AgeLaw, DistanceLaw, StarInputs } from '@/lib/sensitivity';
-import type { ContrastCurveRow, TargetRow } from '@/models';
+import type { TargetRow } from '@/models';
+import { MissingInput } from './missing-input';
+import { candidatesOf, membershipOf, type OwnCurve, stellarCompanionOf } from './star-facts';
 
-/** Something that the computation needs and the tables do not hold, in a sentence for people. */
-export class MissingInput extends Error {}
+export { MissingInput } from './missing-input';
+export type { OwnCurve } from './star-facts';
 
 function ageOf(target: TargetRow): AgeLaw {
   const { ageMyr, ageLowerMyr, ageUpperMyr, ageMinMyr, ageMaxMyr } = target;
@@ -36,21 +38,25 @@ function hostMagOf(target: TargetRow, band: string): number {
   return magnitude.valueMag;
 }
 
-/** A target's curve with the entry whose magnitudes go with it. */
-export interface OwnCurve {
-  target: TargetRow;
-  curve: ContrastCurveRow;
-}
-
 /**
- * What the engine needs of one star. Age and distance are those of the first entry; the curves are
- * sorted by digest, so that the same inputs give the same bytes in whatever order they came in.
+ * What the engine needs of one star. Age, distance and stellar companion are those of the first
+ * entry, candidates those of all; the curves are sorted by digest, so that the same inputs give the
+ * same bytes in whatever order they came in.
  *
+ * @param target first entry
+ * @param ownCurves curves of all entries, each with its target, whose candidates are loaded
  * @throws MissingInput naming what is not there
  */
 export function buildStarInputs(target: TargetRow, ownCurves: OwnCurve[]): StarInputs {
   const sorted = [...ownCurves].sort((a, b) => (a.curve.digest < b.curve.digest ? -1 : 1));
   const hostMags = sorted.map(({ target: owner, curve }) => hostMagOf(owner, curve.band));
+  const owners = [...new Set(ownCurves.map((own) => own.target))];
+  const candidates = candidatesOf(
+    owners,
+    sorted.map(({ curve }) => curve.band),
+  );
+  const membershipProbability = membershipOf(target);
+  const stellarCompanion = stellarCompanionOf(target);
   return {
     name: target.name,
     hostMag: hostMags[0],
@@ -58,6 +64,9 @@ export function buildStarInputs(target: TargetRow, ownCurves: OwnCurve[]): StarI
     ...(target.hostMassMsun !== null && { hostMassMsun: target.hostMassMsun }),
     age: ageOf(target),
     distance: distanceOf(target),
+    ...(membershipProbability !== undefined && { membershipProbability }),
+    ...(stellarCompanion && { stellarCompanion }),
+    ...(candidates.length > 0 && { candidates }),
     curves: sorted.map(({ curve }) => ({
       separationArcsec: Float64Array.from(curve.separationArcsec),
       contrastMag: Float64Array.from(curve.contrastMag),

@@ -1,5 +1,5 @@
 import { type CompanionRecord, foldName } from '@/lib/formats';
-import { CompanionRow, TargetRow } from '@/models';
+import { CompanionRow, ContrastCurveRow, TargetRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 import { TargetNames } from './target-names';
@@ -65,6 +65,8 @@ export async function planCompanions(
     });
     if (!unchanged) steps.push({ record, target, row });
   }
+  // Where candidates cut the curves, the maps of their stars follow them.
+  const needsMaps = survey.mapSettings.candidates === 'cut' && steps.length > 0;
   return {
     items,
     faults: [],
@@ -73,7 +75,7 @@ export async function planCompanions(
       records.length === 0
         ? 'No companions: a table without rows states zero detections'
         : summariseItems(items, 'companion'),
-    needsMaps: false,
+    needsMaps,
     apply: async (transaction, uploadId) => {
       for (const { record, target, row } of steps) {
         const fields = { ...fieldsOf(record), uploadId };
@@ -85,6 +87,16 @@ export async function planCompanions(
           );
         }
       }
+      if (!needsMaps) return;
+      const curves = await ContrastCurveRow.findAll({
+        where: { targetId: steps.map(({ target }) => target.id), replacedAt: null },
+        attributes: ['targetId'],
+        transaction,
+      });
+      await TargetRow.update(
+        { mapState: 'waiting', mapFault: null },
+        { where: { id: curves.map(({ targetId }) => targetId) }, transaction },
+      );
     },
   };
 }
