@@ -1,0 +1,238 @@
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Actor } from '@/lib/access/actor';
+import { studyInputsSchema } from '@/lib/schemas/studies';
+import { type ResultOf, type StudyResult, studyResultSchema } from '@/lib/schemas/study-results';
+import { type StudyKind, studySettingsSchema } from '@/lib/schemas/study-settings';
+import { startStudy } from '@/lib/services/studies';
+import { CompletenessMapRow, type RunRow, StudyRow, type SurveyRow, TargetRow } from '@/models';
+import { withDatabase } from '../support/database';
+import { actorOf, createCollaborationWith } from '../support/people';
+import {
+  buildAnalysis,
+  buildCompanion,
+  buildPopulation,
+  buildSurvey,
+  buildTarget,
+  recipeOf,
+} from '../support/sample';
+import { askForMaps, runToEnd, untilEnded } from '../support/work';
+import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+
+const { query } = withDatabase();
+
+let actor: Actor;
+let surveys: SurveyRow[];
+let run: RunRow;
+let collaborationId: string;
+
+/** Two surveys of three stars each; one star is in both, one has a companion. */
+beforeAll(async () => {
+  await startWorker(await bundleWorker('studies-maps'), { threads: 2 });
+  const { collaboration, people } = await createCollaborationWith(['owner']);
+  collaborationId = collaboration.id;
+  actor = await actorOf(people.owner, collaboration);
+  surveys = [];
+  for (const name of ['North', 'South']) {
+    const survey = await buildSurvey(collaborationId, { name });
+    const movingGroup = name === 'North' ? 'beta Pictoris' : null;
+    const stars =
+      name === 'North' ? ['Star 1', 'Star 2', 'Star 3'] : ['Star 3', 'Star 4', 'Star 5'];
+    for (const star of stars) {
+      const target = await buildTarget(survey, {
+        name: star,
+        movingGroup,
+        distancePc: 10 + 4 * Number(star.slice(-1)),
+        curves: name === 'North' ? [{}] : [{ contrastMag: [6.5, 9, 11.8, 13.4, 14.5, 14.9] }],
+      });
+      if (star === 'Star 4') await buildCompanion(target);
+    }
+    expect((await untilEnded(await askForMaps(survey))).status).toBe('done');
+    surveys.push(survey);
+  }
+  const population = await buildPopulation(collaborationId);
+  run = await analyse(surveys, population.id);
+});
+afterAll(killWorkers);
+
+async function analyse(of: SurveyRow[], populationId: string, given = {}): Promise<RunRow> {
+  const recipe = { ...recipeOf(of, { id: populationId } as never), ...given };
+  const analysis = await buildAnalysis(collaborationId, recipe, actor.personId);
+  const ended = await runToEnd(actor, `A-${analysis.number}`);
+  expect(ended.job.fault).toBeNull();
+  return ended.run;
+}
+
+async function ask<Kind extends StudyKind>(of: RunRow, settings: { kind: Kind } & object) {
+  const { id, job } = await startStudy(actor, of.id, studySettingsSchema.parse(settings));
+  const ended = await untilEnded(job.id);
+  expect(ended.fault).toBeNull();
+  const study = await StudyRow.findByPk(id, { rejectOnEmpty: true });
+  const result: StudyResult = studyResultSchema.parse(study.result);
+  expect(study.headline).not.toBe('');
+  return {
+    study,
+    inputs: studyInputsSchema.parse(study.inputs),
+    result: result as ResultOf<Kind>,
+  };
+}
+
+const limitOf = (of: RunRow) => of.result?.answer.limit as number;
+const mapCount = () => CompletenessMapRow.count({ where: { collaborationId } });
+
+describe('what moves the limit', () => {
+  it('makes the maps of every change anew, and gives the same the second time', async () => {
+    const { result, inputs } = await ask(run, { kind: 'systematics' });
+    expect(result.baseline).toBe(limitOf(run));
+    expect(result.rows.map(({ change }) => change.change)).toEqual([
+      'ages-young',
+      'ages-old',
+      'distances-near',
+      'distances-far',
+      'threshold',
+      'n-sigma-up',
+      'n-sigma-down',
+      'eccentricity',
+      'combination',
+      'combination',
+      'combination',
+    ]);
+    const ratio = (label: string) => {
+      const row = result.rows.find((one) => one.label === label);
+      expect(row?.fault, label).toBeNull();
+      return row?.ratio as number;
+    };
+    // Young companions are brighter and near stars show them: both make the limit tighter.
+    expect(ratio('ages one sigma younger')).toBeLessThan(1);
+    expect(ratio('ages one sigma older')).toBeGreaterThan(1);
+    expect(ratio('threshold one sigma higher')).toBeGreaterThan(1);
+    expect(ratio('threshold one sigma lower')).toBeLessThan(1);
+    expect(ratio('shared stars: same position')).toBe(1);
+    expect(ratio('shared stars: deepest map')).toBeGreaterThan(1);
+    expect(inputs.further.length).toBe(result.rows.length);
+    const maps = await mapCount();
+    const changes = result.rows.map(({ change }) => change);
+    const again = await ask(run, { kind: 'systematics', changes });
+    expect(again.result).toEqual(result);
+    expect(await mapCount()).toBe(maps);
+  });
+
+  it('gives the limit that a run with the same change gives', async () => {
+    const { result } = await ask(run, {
+      kind: 'systematics',
+      changes: [{ change: 'threshold' }, { change: 'eccentricity', law: { law: 'circular' } }],
+    });
+    for (const [i, change] of [
+      { threshold: 'hard' },
+      { eccentricity: { law: 'circular' } },
+    ].entries()) {
+      const changed = [];
+      for (const survey of surveys) {
+        const before = survey.mapSettings;
+        await survey.update({ mapSettings: { ...before, ...change } as typeof before });
+        expect((await untilEnded(await askForMaps(survey))).status).toBe('done');
+        changed.push({ survey, before });
+      }
+      const other = await analyse(surveys, run.recipe.populationId);
+      expect(result.rows[i].limit).toBe(limitOf(other));
+      for (const { survey, before } of changed) {
+        await survey.update({ mapSettings: before });
+        expect((await untilEnded(await askForMaps(survey))).status).toBe('done');
+      }
+    }
+  });
+
+  it('refuses when a star has changed since the run', async () => {
+    const target = await TargetRow.findOne({
+      where: { surveyId: surveys[0].id, name: 'Star 1' },
+      rejectOnEmpty: true,
+    });
+    await target.update({ ageMyr: 50 });
+    const { job } = await startStudy(
+      actor,
+      run.id,
+      studySettingsSchema.parse({ kind: 'systematics', changes: [{ change: 'ages-old' }] }),
+    );
+    const ended = await untilEnded(job.id);
+    expect(ended.status).toBe('failed');
+    expect(ended.fault).toContain('Star 1');
+    await target.update({ ageMyr: 45 });
+  });
+});
+
+describe('overlaps', () => {
+  it('give the limits that runs by each rule give, within the bounds of any rule', async () => {
+    const { result } = await ask(run, { kind: 'overlap-rules' });
+    for (const { rule, limit } of result.rules) {
+      if (rule === 'refuse') {
+        expect(limit).toBeNull();
+        continue;
+      }
+      const other = await analyse(surveys, run.recipe.populationId, { combination: rule });
+      expect(limit).toBe(limitOf(other));
+      expect(limit).toBeLessThanOrEqual(result.bracket.highest);
+      expect(limit).toBeGreaterThanOrEqual(result.bracket.lowest);
+    }
+    expect(result.bracket.lowest).toBeLessThan(result.bracket.highest);
+    const [star] = result.shared;
+    expect(result.shared).toHaveLength(1);
+    expect(star).toMatchObject({ name: 'Star 3', surveys: ['North', 'South'] });
+    const { samePosition, deepest, independent } = star.probability;
+    expect(deepest).toBeLessThan(samePosition as number);
+    expect(samePosition as number).toBeLessThan(independent);
+  });
+
+  it('are refused where no star is shared', async () => {
+    const alone = await analyse([surveys[0]], run.recipe.populationId);
+    await expect(
+      startStudy(actor, alone.id, studySettingsSchema.parse({ kind: 'overlap-rules' })),
+    ).rejects.toThrow('No star of this run is in several surveys');
+  });
+});
+
+describe('which stars carry the limit', () => {
+  it('equals runs without a survey, and without a star', async () => {
+    const { result } = await ask(run, { kind: 'influence' });
+    expect(result.limit).toBe(limitOf(run));
+    expect(result.stars).toHaveLength(5);
+    const withoutSouth = await analyse([surveys[0]], run.recipe.populationId);
+    const south = result.surveys.find(({ name }) => name === 'South');
+    expect(south?.without.limit).toBeCloseTo(limitOf(withoutSouth), 12);
+    const target = await TargetRow.findOne({
+      where: { surveyId: surveys[1].id, name: 'Star 4' },
+      rejectOnEmpty: true,
+    });
+    await target.update({ leftOutReason: 'for this test' });
+    const without = await analyse(surveys, run.recipe.populationId);
+    await target.update({ leftOutReason: null });
+    const star = result.stars.find(({ name }) => name === 'Star 4');
+    expect(star?.hosts).toEqual(['Star 4 b']);
+    expect(star?.without.limit).toBeCloseTo(limitOf(without), 12);
+    expect(star?.without.exposure).toBeCloseTo(without.result?.exposure as number, 12);
+    const total = result.stars.reduce((sum, { probability }) => sum + probability, 0);
+    expect(total).toBeCloseTo(result.exposure, 12);
+    expect(result.groups).toMatchObject([{ name: 'beta Pictoris', stars: 3 }]);
+    expect(result.groups[0].without.limit).toBeGreaterThan(result.limit);
+  });
+});
+
+describe('maps that are stored', () => {
+  it('are used as they are, not computed again', async () => {
+    const change = { change: 'ages-young' as const };
+    await ask(run, { kind: 'systematics', changes: [change] });
+    await query(
+      `update completeness_map set node_values = decode(repeat('ffff', octet_length(node_values) / 2), 'hex')
+       where collaboration_id = $1
+         and not digest = any(select m.digest from run_star s join completeness_map m on m.id = s.map_id
+           where s.run_id = $2)`,
+      [collaborationId, run.id],
+    );
+    const { result } = await ask(run, {
+      kind: 'systematics',
+      changes: [change, { change: 'ages-old' }],
+    });
+    expect(result.rows.map(({ exposure }) => exposure)).toEqual([
+      expect.closeTo(5, 9),
+      expect.closeTo(5, 9),
+    ]);
+  });
+});
