@@ -35,5 +35,21 @@ export function describeMapSettings(settings: MapSettings, coolingName: string |
     settings.cooling.kind === 'built-in'
       ? 'approximate cooling law'
       : (coolingName ?? 'cooling table');
-  return `${cooling}; ${describeEccentricity(settings.eccentricity)}; ${settings.threshold} threshold`;
+  return [
+    cooling,
+    describeEccentricity(settings.eccentricity),
+    `${settings.threshold} threshold`,
+    ...describeRules(settings),
+  ].join('; ');
+}
+
+/** The rules that are switched on, each in a few words. */
+function describeRules(settings: MapSettings): string[] {
+  const { smallSample, unstableZone, candidates, candidateHalfWidthArcsec, fieldAge } = settings;
+  const words: string[] = [];
+  if (smallSample) words.push(`limits raised for elements of ${smallSample.fwhmArcsec}″`);
+  if (unstableZone === 'remove') words.push('unstable orbits taken out');
+  if (candidates === 'cut') words.push(`cut ${candidateHalfWidthArcsec}″ around candidates`);
+  if (fieldAge) words.push(`field age ${fieldAge.minMyr}–${fieldAge.maxMyr} Myr`);
+  return words;
 }

@@ -1,6 +1,7 @@
 import { SelectField } from '@/components/ui/select-field';
 import type { MapSettings } from '@/lib/schemas/sensitivity';
 import type { CoolingTableView } from '@/lib/schemas/surveys';
+import { MapRuleFields, readMapRules } from './map-rule-fields';
 import { describeEccentricity, eccentricityChoices } from './map-setting-words';
 
 interface MapSettingsFieldsProps {
@@ -66,18 +67,23 @@ export function MapSettingsFields(props: MapSettingsFieldsProps) {
           { value: 'hard', label: 'hard, all or nothing at the contrast limit' },
         ]}
       />
+      <MapRuleFields settings={settings} />
     </>
   );
 }
 
-/** The three settings as the form holds them. */
+/** The settings as the form holds them; axes and what lies outside tables are not on it. */
 export function readMapSettings(
   form: FormData,
-): Pick<MapSettings, 'cooling' | 'eccentricity' | 'threshold'> {
+): Omit<
+  MapSettings,
+  'massOutsideTable' | 'ageOutsideTable' | 'ageNodesPerSide' | 'massMjup' | 'semiMajorAxisAu'
+> {
   const cooling = String(form.get('cooling'));
   return {
     cooling: cooling === BUILT_IN ? { kind: BUILT_IN } : { kind: 'table', coolingTableId: cooling },
     eccentricity: JSON.parse(String(form.get('eccentricity'))),
     threshold: form.get('threshold') === 'hard' ? 'hard' : 'smooth',
+    ...readMapRules(form),
   };
 }
