@@ -11,10 +11,17 @@ export type {
 } from './answer';
 export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation } from './answer';
 export type { Likelihood, RatePosterior, RatePrior, RateQuantity, RateQuestion } from './contract';
+export type { ContractedMaps, MovingAxis } from './contraction';
+export { completenessWhileMoving, contractStack, contractStillAxis } from './contraction';
 export type { ExposureContributions } from './contributions';
 export { exposureContributions } from './contributions';
 export type { PosteriorCurve } from './curve';
 export { displayRange, posteriorCurve } from './curve';
+export { detectionShape, logDetectionShapes } from './detection-shape';
+export type { BayesFactorWords, EvidenceSettings, PopulationEvidence } from './evidence';
+export { bayesFactorWords, populationEvidence } from './evidence';
+export type { FreeIndexPosterior, FreeIndexQuestion } from './free-indices';
+export { freeIndexPosterior } from './free-indices';
 export {
   binomialLowerLimit,
   binomialUpperLimit,
@@ -25,6 +32,16 @@ export {
   wilsonInterval,
 } from './frequentist';
 export { logNoDetection } from './host-fraction';
+export type { IndexNodes, IndexRange } from './index-nodes';
+export type {
+  ConditionalLimit,
+  IndexSummary,
+  JointDensity,
+  ParameterSummary,
+} from './index-summaries';
+export { limitByIndex, summariseIndices } from './index-summaries';
+export type { IndexRanges, IndexTable } from './index-table';
+export { completenessAtIndices, INDEX_NODES, indexTable } from './index-table';
 export {
   equalTailedInterval,
   highestDensityInterval,
@@ -33,6 +50,12 @@ export {
 } from './intervals';
 export type { LevelLimit } from './levels';
 export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
+export type { LimitMap, LimitMapQuestion } from './limit-map';
+export { limitMap, sumMaps } from './limit-map';
+export type { CompanionMeasurement, Measured, MeasuredDetection } from './measured-places';
+export type { ComparedPopulation, PopulationComparison } from './population-comparison';
+export { comparePopulations } from './population-comparison';
+export type { PairAnswers, PairQuestion } from './population-pairs';
 export {
   describePlanet,
   describePlanets,
@@ -41,9 +64,15 @@ export {
 } from './population-words';
 export { ratePosterior } from './posterior';
 export { priorFor } from './prior-for';
+export type { LimitingEnd, SettledIndices } from './settled-indices';
+export { freeIndices } from './settled-indices';
 export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
 export {
   describeLevel,
   describeLimit,
   describePrior,
 } from './statement';
+export type { IndexPlane, Sweep, SweepParameter } from './sweep';
+export { sweepIndices, sweepLimits, withParameter } from './sweep';
+export type { TailLimits } from './tail-limits';
+export { tailLimits } from './tail-limits';

@@ -1,14 +1,19 @@
 import { expect, test } from 'vitest';
 import {
+  comparePopulations,
   equalTailedInterval,
+  freeIndices,
   highestDensityInterval,
   type Likelihood,
+  type PopulationView,
   type RatePrior,
   ratePosterior,
+  summariseIndices,
   upperLimit,
   viewPopulation,
 } from '@/lib/inference';
-import { computeCompletenessMap, type MapGrid } from '@/lib/sensitivity';
+import { computeCompletenessMap } from '@/lib/sensitivity';
+import { type DetectionInputs, measuredDetection } from './support/check-detection';
 import { differences, readChecks, runCheckFile } from './support/check-file';
 import {
   type CurveInputs,
@@ -19,6 +24,7 @@ import {
   starInputs,
 } from './support/check-inputs';
 import { checkedPopulation, type PopulationInputs } from './support/check-populations';
+import { publishedMaps, publishedSum, surveyGrid, surveyStars } from './support/check-survey';
 
 interface Survey {
   masses_mjup: number[];
@@ -36,20 +42,9 @@ interface Survey {
   >;
 }
 
-const mapChecks = readChecks('survey-maps');
-const survey = mapChecks[0].inputs as unknown as Survey;
-const grid: MapGrid = {
-  massMjup: Float64Array.from(survey.masses_mjup),
-  semiMajorAxisAu: Float64Array.from(survey.axes_au),
-};
+const survey = readChecks('survey-maps')[0].inputs as unknown as Survey;
 
-/** The maps of the check file, all stars of one option in order. */
-function publishedMaps(option: string): Float64Array {
-  const maps = mapChecks.filter(({ name }) => name.startsWith(`map ${option} `));
-  return Float64Array.from((maps.map(({ expected }) => expected) as number[][][]).flat(2));
-}
-
-/** The same maps by our own engine, from curves, ages and distances. */
+/** The maps of one option by our own engine, from curves, ages and distances. */
 function computedMaps(optionName: string): Float64Array {
   const option = survey.options[optionName];
   const maps = survey.stars.map((star) => {
@@ -57,13 +52,14 @@ function computedMaps(optionName: string): Float64Array {
     const curve = contrastCurve(survey.curves[curveName], band, option.n_sigma, offset);
     const inputs = starInputs(star, [curve], option.age_nodes_per_half === 0);
     const settings = sensitivitySettings(option.eccentricity, option.rule);
-    return computeCompletenessMap(inputs, { kind: 'built-in' }, grid, settings).map.completeness;
+    return computeCompletenessMap(inputs, { kind: 'built-in' }, surveyGrid, settings).map
+      .completeness;
   });
   return Float64Array.from(maps.flatMap((map) => Array.from(map)));
 }
 
 function meanCompleteness(maps: Float64Array, population: PopulationInputs) {
-  const view = viewPopulation(maps, grid, checkedPopulation(population));
+  const view = viewPopulation(maps, surveyGrid, checkedPopulation(population));
   return { per_star: view.completenessPerStar, exposure: view.exposure };
 }
 
@@ -108,16 +104,106 @@ function summarise(inputs: PosteriorInputs) {
   };
 }
 
+interface BayesFactorInputs {
+  populations: string[];
+  prior: { law: 'uniform'; max: number };
+  completeness_per_star: number[][];
+  detections: DetectionInputs[];
+}
+
+/** A population with the completeness that the check itself carries. */
+function givenView(name: string, completeness: number[]): PopulationView {
+  const { population } = checkCalled(`mean completeness ${name} full`).inputs as {
+    population: PopulationInputs;
+  };
+  return {
+    population: checkedPopulation(population),
+    completenessPerStar: Float64Array.from(completeness),
+    numberSeenPerStar: null,
+    rateScale: null,
+    hostMassMsun: null,
+    exposure: completeness.reduce((a, b) => a + b),
+    stars: completeness.length,
+    shareOutsideMap: 0,
+  };
+}
+
+const bayesFactor =
+  (likelihood: Likelihood) =>
+  ({ populations, prior, completeness_per_star: given, detections }: BayesFactorInputs) => {
+    const { rows } = comparePopulations(
+      populations.map((name, i) => ({ name, view: givenView(name, given[i]) })),
+      {
+        likelihood,
+        prior,
+        detections: detections.map((one) => measuredDetection(one, surveyStars)),
+      },
+    );
+    // The file holds the first over the second, the table every row over the first.
+    const logFactor = -(rows[1].logBayesFactor ?? Number.NaN);
+    return {
+      log_evidence: rows.map(({ logEvidence }) => logEvidence),
+      log_bayes_factor_first_over_second: logFactor,
+      bayes_factor: Math.exp(logFactor),
+    };
+  };
+
+interface FreeInputs {
+  detections: DetectionInputs[];
+  free: {
+    mass_range_mjup: [number, number];
+    axis_range_au: [number, number];
+    alpha_range: [number, number];
+    beta_range: [number, number];
+    rate_max: number;
+  };
+}
+
+function freeIndexSummary({ detections, free }: FreeInputs) {
+  const { posterior, limit } = freeIndices(
+    {
+      maps: publishedSum('full'),
+      grid: surveyGrid,
+      box: {
+        massMinMjup: free.mass_range_mjup[0],
+        massMaxMjup: free.mass_range_mjup[1],
+        semiMajorAxisMinAu: free.axis_range_au[0],
+        semiMajorAxisMaxAu: free.axis_range_au[1],
+      },
+      indices: {
+        massIndex: { min: free.alpha_range[0], max: free.alpha_range[1] },
+        semiMajorAxisIndex: { min: free.beta_range[0], max: free.beta_range[1] },
+      },
+      likelihood: 'mean-number',
+      prior: { law: 'uniform', max: free.rate_max },
+      detections: detections.map((one) => measuredDetection(one, surveyStars)),
+    },
+    0.95,
+  );
+  const { rate, massIndex, semiMajorAxisIndex, correlations } = summariseIndices(posterior);
+  return {
+    rate_mean: rate.mean,
+    rate_sd: rate.standardDeviation,
+    rate_upper_95: limit,
+    alpha_mean: massIndex.mean,
+    alpha_sd: massIndex.standardDeviation,
+    beta_mean: semiMajorAxisIndex.mean,
+    beta_sd: semiMajorAxisIndex.standardDeviation,
+    alpha_beta_covariance:
+      correlations.indices * massIndex.standardDeviation * semiMajorAxisIndex.standardDeviation,
+    log_evidence: posterior.rate.logEvidence,
+  };
+}
+
 runCheckFile('survey-inference', {
   runners: {
     'mean completeness ': ({ option, population }) =>
       meanCompleteness(computedMaps(option), population),
     'poisson ': summarise,
     'bernoulli ': summarise,
-  },
-  later: {
-    'Bayes factor': 'Bayes factors between populations (10) come with evidence',
-    'free indices': 'free indices (8.3) come with their likelihood',
+    'Bayes factor poisson': bayesFactor('mean-number'),
+    'Bayes factor bernoulli': bayesFactor('host-fraction'),
+    'free indices': freeIndexSummary,
   },
 });
 
