@@ -17,6 +17,7 @@ export const lawNames: Record<PriorLaw, string> = {
   'log-uniform': 'log-uniform',
   beta: 'beta',
   gamma: 'gamma',
+  tabulated: 'table',
 };
 
 /** The laws that a likelihood takes. */
@@ -44,6 +45,9 @@ export function priorOfLaw(law: PriorLaw, likelihood: Likelihood, present: RateP
       return { law, a: 1, b: 1 };
     case 'gamma':
       return { law, shape: 1, rate: 1 };
+    case 'tabulated':
+      // A table is uploaded, not chosen: what is there stays.
+      return present;
   }
 }
 
@@ -51,6 +55,9 @@ export function priorOfLaw(law: PriorLaw, likelihood: Likelihood, present: RateP
 export function fitPrior(prior: RatePrior, likelihood: Likelihood): RatePrior {
   if (likelihood === 'host-fraction') {
     if (prior.law === 'gamma') return { law: 'uniform', max: 1 };
+    if (prior.law === 'tabulated' && prior.value[prior.value.length - 1] > 1) {
+      return { law: 'uniform', max: 1 };
+    }
     if (prior.law === 'log-uniform' && prior.max > 1) {
       return { law: 'log-uniform', min: Math.min(prior.min, DEFAULT_FLOOR), max: 1 };
     }

@@ -85,5 +85,7 @@ function fieldsOf(prior: RatePrior, likelihood: Likelihood): PriorField[] {
         { name: 'a', label: 'a', value: prior.a, put: (a) => ({ ...prior, a }) },
         { name: 'b', label: 'b', value: prior.b, put: (b) => ({ ...prior, b }) },
       ];
+    case 'tabulated':
+      return [];
   }
 }

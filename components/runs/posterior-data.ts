@@ -85,5 +85,7 @@ function priorLabel(prior: LiveSetting['prior'], quantity: RateQuantity): string
       return `gamma (${formatPlain(prior.shape)}, ${formatPlain(prior.rate)})`;
     case 'beta':
       return `beta (${formatPlain(prior.a)}, ${formatPlain(prior.b)})`;
+    case 'tabulated':
+      return 'tabulated';
   }
 }

@@ -10,7 +10,17 @@ export type {
   SummedMap,
 } from './answer';
 export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation } from './answer';
-export type { Likelihood, RatePosterior, RatePrior, RateQuantity, RateQuestion } from './contract';
+export { backgroundUpperLimit } from './background';
+export { MOST_CANDIDATES } from './candidates';
+export type {
+  CandidateTreatment,
+  Likelihood,
+  RatePosterior,
+  RatePrior,
+  RateQuantity,
+  RateQuestion,
+  UndecidedCandidate,
+} from './contract';
 export type { ContractedMaps, MovingAxis } from './contraction';
 export { completenessWhileMoving, contractStack, contractStillAxis } from './contraction';
 export type { ExposureContributions } from './contributions';
@@ -56,6 +66,7 @@ export type { CompanionMeasurement, Measured, MeasuredDetection } from './measur
 export type { ComparedPopulation, PopulationComparison } from './population-comparison';
 export { comparePopulations } from './population-comparison';
 export type { PairAnswers, PairQuestion } from './population-pairs';
+export type { DescribedPopulation } from './population-words';
 export {
   describePlanet,
   describePlanets,
@@ -74,5 +85,7 @@ export {
 } from './statement';
 export type { IndexPlane, Sweep, SweepParameter } from './sweep';
 export { sweepIndices, sweepLimits, withParameter } from './sweep';
+export type { DensityTable } from './tabulated-prior';
+export { densityAt, tabulatePosterior } from './tabulated-prior';
 export type { TailLimits } from './tail-limits';
 export { tailLimits } from './tail-limits';

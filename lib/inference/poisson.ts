@@ -11,6 +11,8 @@ export interface RateLikelihood {
   logRegular(x: number, complement: number): number;
   /** Rate of the exponential decay [stars]; 0 where the rate ends at 1. */
   decay: number;
+  /** Power of the rate far out, beyond `powerOfRate`; absent: none. */
+  growth?: number;
 }
 
 /**

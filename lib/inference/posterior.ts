@@ -1,131 +1,133 @@
-import type { RatePosterior, RateQuestion } from './contract';
-import { hostFractionLikelihood } from './host-fraction';
-import { integrateDensity, type Stretch } from './integrated-density';
-import { poissonLikelihood, type RateLikelihood } from './poisson';
-import { type PriorLaw, priorLaw } from './priors';
-import { fromOne, fromZero, type LogDensity, logarithmic, placeAt } from './stretches';
+import { fixedMixture, rateDependentLikelihood, settledLikelihood } from './candidates';
+import { type CheckedQuestion, checkQuestion } from './checked-question';
+import type { RatePosterior, RatePrior, RateQuestion } from './contract';
+import { type IntegratedDensity, integrateDensity } from './integrated-density';
+import type { RateLikelihood } from './poisson';
+import type { PriorLaw } from './priors';
+import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './product';
+import { lawBelow } from './rate-scale';
+import { placeAt } from './stretches';
+
+export { logPriorNorm, multiply, NO_DATA, type Product, stretchesOf } from './product';
 
 /** Below this many expected detections at the largest rate the data say nothing. */
 const NOTHING_OBSERVABLE = 1e-9;
 
-/** What says nothing of the rate. */
-export const NO_DATA: RateLikelihood = {
-  powerOfRate: 0,
-  powerOfComplement: 0,
-  logRegular: () => 0,
-  decay: 0,
-};
-
-/** Prior times likelihood: the two powers put together, and the rest. */
-export interface Product {
-  exponentAtZero: number;
-  exponentAtOne: number;
-  logDensity: LogDensity;
-}
-
-/** Puts the powers of prior and likelihood together. */
-export function multiply(prior: PriorLaw, likelihood: RateLikelihood): Product {
-  const exponentAtZero = prior.exponentAtZero + likelihood.powerOfRate;
-  const exponentAtOne = prior.exponentAtOne + likelihood.powerOfComplement;
-  return {
-    exponentAtZero,
-    exponentAtOne,
-    logDensity: ({ x, logX, complement, logComplement }) =>
-      (exponentAtZero === 1 ? 0 : (exponentAtZero - 1) * logX) +
-      (exponentAtOne === 1 ? 0 : (exponentAtOne - 1) * logComplement) +
-      prior.logRegular(x, complement) +
-      likelihood.logRegular(x, complement),
-  };
-}
-
-/** Detections that the likelihood counts: for the host fraction a star enters once. */
-function countedStars(question: RateQuestion): number[] {
-  const { likelihood, completeness, detectedStars } = question;
-  for (const star of detectedStars) {
-    if (!Number.isInteger(star) || star < 0) {
-      throw new RangeError(`detectedStars holds indices of stars, got ${star}`);
-    }
-  }
-  if (likelihood === 'mean-number') return [...detectedStars];
-  const distinct = [...new Set(detectedStars)];
-  for (const star of distinct) {
-    if (star >= completeness.length) {
-      throw new RangeError(
-        `detectedStars names star ${star}, but there are ${completeness.length} stars`,
-      );
-    }
-    if (completeness[star] === 0) {
-      throw new RangeError(
-        `star ${star} has a detection where its map says nothing can be seen (mean completeness ` +
-          '0): check the map, the ranges of the population or the detection',
-      );
-    }
-  }
-  return distinct;
-}
-
-function sumCompleteness(question: RateQuestion): number {
-  const isFraction = question.likelihood === 'host-fraction';
-  let sum = 0;
-  for (let star = 0; star < question.completeness.length; star++) {
-    const c = question.completeness[star];
-    if (!(c >= 0) || !Number.isFinite(c) || (isFraction && c > 1)) {
-      throw new RangeError(
-        `completeness of star ${star} must lie ${isFraction ? 'in 0..1' : 'at 0 or above'}, got ${c}`,
-      );
-    }
-    sum += c;
-  }
-  return sum;
-}
-
-/** Upper end for an unbounded prior: the posterior's weight above it is below 1e-20. */
-function effectiveEnd(exponent: number, decay: number): number {
-  if (!(decay > 0)) {
-    throw new RangeError(
-      'there is no posterior: the stars show nothing of this population and the prior has no ' +
-        'upper end; give the prior a maximum',
-    );
-  }
-  return (exponent + 10 * Math.sqrt(exponent) + 60) / decay;
+/** Prior and likelihood of a question in x, the rate in units of the largest one allowed. */
+export interface RateModel {
+  checked: CheckedQuestion;
+  law: PriorLaw;
+  likelihood: RateLikelihood;
+  constrained: boolean;
 }
 
 /**
- * Prior times likelihood on pieces of the support in which it is smooth.
+ * Prior and likelihood of a question, before they are integrated.
  *
- * @throws RangeError for a prior without an upper end where the data give none either
+ * @throws RangeError as `ratePosterior`
  */
-export function stretchesOf(prior: PriorLaw, likelihood: RateLikelihood): Stretch[] {
-  const [low, top] = prior.support;
-  const { exponentAtZero, exponentAtOne, logDensity } = multiply(prior, likelihood);
-  if (low > 0) return [logarithmic(low, top, logDensity)];
-  if (top === Number.POSITIVE_INFINITY) {
-    const end = effectiveEnd(exponentAtZero, prior.decay + likelihood.decay);
-    return [fromZero(end, exponentAtZero, logDensity)];
+export function rateModel(question: RateQuestion): RateModel {
+  const checked = checkQuestion(question);
+  const { exposure, counted, undecided, background, unit } = checked;
+  const law = lawBelow(checked);
+  const found = counted.length + undecided.length;
+  if (found > 0 && exposure === 0 && background === 0) {
+    throw new RangeError(
+      `${found} detections, but no star shows anything of this population (exposure 0): ` +
+        'check the maps, the ranges of the population or the detections',
+    );
   }
-  if (top !== 1) return [fromZero(top, exponentAtZero, logDensity)];
-  return [fromZero(0.5, exponentAtZero, logDensity), fromOne(0.5, exponentAtOne, logDensity)];
+  const largest = exposure === 0 ? 0 : exposure * unit * law.support[1];
+  const constrained = (found > 0 && background === 0) || largest >= NOTHING_OBSERVABLE;
+  return {
+    checked,
+    law,
+    constrained,
+    likelihood: constrained ? fullLikelihood(checked, law) : NO_DATA,
+  };
 }
 
-/** ln of the integral of a prior's own form; NaN where it has none. */
-export function logPriorNorm(prior: PriorLaw): number {
-  if (prior.logNorm === null) return Number.NaN;
-  if (prior.logNorm !== 'numerical') return prior.logNorm;
-  return integrateDensity(stretchesOf(prior, NO_DATA)).logMass;
+function fullLikelihood(checked: CheckedQuestion, law: PriorLaw): RateLikelihood {
+  if (checked.undecided.length === 0) return settledLikelihood(checked, checked.counted);
+  return checked.treatment === 'fixed'
+    ? fixedMixture(checked, law)
+    : rateDependentLikelihood(checked);
+}
+
+/** Where the rates of single stars end a prior that reaches further; else null. */
+function cutOf(prior: RatePrior, likelihood: RateQuestion['likelihood'], unit: number) {
+  if (likelihood === 'mean-number' || unit === 1) return null;
+  let top = 1;
+  if (prior.law === 'tabulated') top = prior.value[prior.value.length - 1];
+  else if ('max' in prior && prior.max !== undefined) top = prior.max;
+  return unit < top ? unit : null;
+}
+
+/** A model's posterior from its integral. */
+export function posteriorOf(model: RateModel, integrated: IntegratedDensity): RatePosterior {
+  const { checked, law, likelihood, constrained } = model;
+  const { unit, counted, undecided, background } = checked;
+  const { logDensity } = multiply(law, likelihood);
+  const priorOnly = multiply(law, NO_DATA);
+  const [low, top] = law.support;
+  const isOutside = (x: number) => !(x >= low && x <= top) || x === Number.POSITIVE_INFINITY;
+  let knownNorm: number | undefined;
+  const priorNorm = () => {
+    knownNorm ??= logPriorNorm(law);
+    return knownNorm;
+  };
+  const isMixed = constrained && undecided.length > 0 && checked.treatment === 'fixed';
+  const logUnit = Math.log(unit);
+  return {
+    quantity: checked.likelihood === 'mean-number' ? 'companions_per_star' : 'host_fraction',
+    exposure: checked.exposure,
+    detections: counted.length,
+    undecided: undecided.length,
+    background,
+    prior: checked.prior,
+    support: [unit * low, unit * top],
+    cutAt: cutOf(checked.prior, checked.likelihood, unit),
+    mean: unit * integrated.mean,
+    median: unit * integrated.quantile(0.5),
+    standardDeviation: unit * integrated.standardDeviation,
+    constrained,
+    get logEvidence() {
+      if (isMixed) return Number.NaN;
+      return integrated.logMass - priorNorm() + counted.length * logUnit;
+    },
+    density(rate) {
+      const x = rate / unit;
+      if (isOutside(x)) return 0;
+      return Math.exp(logDensity(placeAt(x)) - integrated.logMass) / unit;
+    },
+    priorDensity(rate) {
+      const x = rate / unit;
+      if (isOutside(x)) return 0;
+      return Math.exp(priorOnly.logDensity(placeAt(x)) - priorNorm()) / unit;
+    },
+    cumulative: (rate) => integrated.cumulative(rate / unit),
+    quantile: (p) => unit * (p === 1 ? top : integrated.quantile(p)),
+    nodes() {
+      const { rate, weight } = integrated.nodes();
+      return unit === 1 ? { rate, weight } : { rate: rate.map((x) => unit * x), weight };
+    },
+  };
 }
 
 /**
  * Posterior of the rate of companions: of F (mean number per star) or of f (fraction of stars).
  *
  * Prior times F^k exp(-F S), or times f^k and the product of 1 - f C_j over the stars without a
- * counted detection, integrated once; limits and intervals are then root finding.
+ * counted detection, integrated once; limits and intervals are then root finding. Stars may differ in
+ * their rate, a background may be known, and candidates may be undecided.
  *
  * @param question likelihood, mean completeness of each star [fraction] (for the mean number also
  *   one entry holding the sum over stars), counted detections, prior
  * @returns mean, median, density, distribution function and quantiles of the rate
  * @throws RangeError for a prior that does not fit (see `priorLaw`), completeness out of range, a
- *   detected star whose completeness is 0 (host fraction), detections without any exposure, and a
- *   prior without an upper end where nothing could be seen
+ *   detected star whose completeness is 0 (host fraction), detections without any exposure, a
+ *   prior without an upper end where nothing could be seen, or none of it below the cut that the
+ *   rates of single stars need; see `checkQuestion` for the rest
  * Edges: where exposure times the largest rate is below 1e-9 the posterior is the prior and
  *   `constrained` is false: no limit may then be headlined.
  * Accuracy: limits 1e-9 relative against the closed forms. Cost: some hundred evaluations of the
@@ -137,55 +139,6 @@ export function logPriorNorm(prior: PriorLaw): number {
  *   prior: { law: 'uniform', max: 1 } }).quantile(0.95) // 0.119829290931605
  */
 export function ratePosterior(question: RateQuestion): RatePosterior {
-  const exposure = sumCompleteness(question);
-  const counted = countedStars(question);
-  const detections = counted.length;
-  const law = priorLaw(question.prior, question.likelihood, question.completeness);
-  if (detections > 0 && exposure === 0) {
-    throw new RangeError(
-      `${detections} detections, but no star shows anything of this population (exposure 0): ` +
-        'check the maps, the ranges of the population or the detections',
-    );
-  }
-  const [low, top] = law.support;
-  const largest = exposure === 0 ? 0 : exposure * top;
-  const constrained = detections > 0 || largest >= NOTHING_OBSERVABLE;
-  const likelihood = !constrained
-    ? NO_DATA
-    : question.likelihood === 'mean-number'
-      ? poissonLikelihood(exposure, detections)
-      : hostFractionLikelihood(question.completeness, counted);
-  const integrated = integrateDensity(stretchesOf(law, likelihood));
-  const { logDensity } = multiply(law, likelihood);
-  const priorOnly = multiply(law, NO_DATA);
-  const isOutside = (x: number) => !(x >= low && x <= top) || x === Number.POSITIVE_INFINITY;
-  let knownNorm: number | undefined;
-  const priorNorm = () => {
-    knownNorm ??= logPriorNorm(law);
-    return knownNorm;
-  };
-  return {
-    quantity: question.likelihood === 'mean-number' ? 'companions_per_star' : 'host_fraction',
-    exposure,
-    detections,
-    prior: question.prior,
-    support: [low, top],
-    mean: integrated.mean,
-    median: integrated.quantile(0.5),
-    standardDeviation: integrated.standardDeviation,
-    constrained,
-    get logEvidence() {
-      return integrated.logMass - priorNorm();
-    },
-    density(x) {
-      if (isOutside(x)) return 0;
-      return Math.exp(logDensity(placeAt(x)) - integrated.logMass);
-    },
-    priorDensity(x) {
-      if (isOutside(x)) return 0;
-      return Math.exp(priorOnly.logDensity(placeAt(x)) - priorNorm());
-    },
-    cumulative: integrated.cumulative,
-    quantile: (p) => (p === 1 ? top : integrated.quantile(p)),
-  };
+  const model = rateModel(question);
+  return posteriorOf(model, integrateDensity(stretchesOf(model.law, model.likelihood)));
 }

@@ -1,5 +1,6 @@
 import { logBeta, logGamma } from '@/lib/numerics/special';
 import type { Likelihood, RatePrior } from './contract';
+import { tabulatedLaw } from './tabulated-prior';
 
 /**
  * A prior as the posterior needs it: x^(exponentAtZero - 1) (1 - x)^(exponentAtOne - 1) times
@@ -15,6 +16,8 @@ export interface PriorLaw {
   decay: number;
   /** ln of the integral; null if it has none, 'numerical' where only quadrature gives it. */
   logNorm: number | null | 'numerical';
+  /** Ends of the pieces in which the density is smooth, the support's own among them. */
+  breaks?: number[];
 }
 
 /** The parts that most priors share: no power at 1, nothing regular, no decay. */
@@ -131,8 +134,8 @@ function beta(prior: { a: number; b: number }): PriorLaw {
  *
  * @param completeness shape [star], 0..1: only the Jeffreys prior of the host fraction reads it
  * @throws RangeError for a maximum that is not positive, a floor that is missing or not below the
- *   maximum, a fraction above 1, a shape that is not positive, a gamma prior of a fraction and a
- *   beta prior of a mean number: each with the reason
+ *   maximum, a fraction above 1, a shape that is not positive, a table that cannot be used, a gamma
+ *   prior of a fraction and a beta prior of a mean number: each with the reason
  * @source Jeffreys 1946, Proc. R. Soc. A 186, 453, for the two Jeffreys priors
  */
 export function priorLaw(
@@ -171,5 +174,7 @@ export function priorLaw(
         );
       }
       return beta(prior);
+    case 'tabulated':
+      return tabulatedLaw(prior, likelihood);
   }
 }

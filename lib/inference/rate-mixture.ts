@@ -90,6 +90,8 @@ export function mixturePosterior(mixture: RateMixture): RatePosterior {
       isOutside(x) ? 0 : Math.exp(priorOnly.logDensity(placeAt(x)) - priorNorm),
     cumulative: integrated.cumulative,
     quantile: (p) => (p === 1 ? top : integrated.quantile(p)),
+    cutAt: null,
+    nodes: integrated.nodes,
   };
 }
 

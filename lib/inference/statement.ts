@@ -92,6 +92,14 @@ export function describePrior(prior: RatePrior, quantity: RateQuantity): string 
       return `gamma for ${rate}, shape ${formatPlain(prior.shape)}, rate ${formatPlain(prior.rate)} stars`;
     case 'beta':
       return `beta for ${rate}, a = ${formatPlain(prior.a)}, b = ${formatPlain(prior.b)}`;
+    case 'tabulated': {
+      const [low, top] = [prior.value[0], prior.value[prior.value.length - 1]];
+      const from = prior.source === undefined ? '' : ` (${prior.source})`;
+      return (
+        `tabulated for ${rate}${from}, straight between ${prior.value.length} points, ` +
+        `${formatPlain(low)} to ${formatPlain(top)}`
+      );
+    }
   }
 }
 
@@ -99,6 +107,7 @@ export function describePrior(prior: RatePrior, quantity: RateQuantity): string 
 export function priorTop(prior: RatePrior, quantity: RateQuantity): number {
   if (prior.law === 'uniform' || prior.law === 'log-uniform') return prior.max;
   if (prior.law === 'jeffreys' && prior.max !== undefined) return prior.max;
+  if (prior.law === 'tabulated') return prior.value[prior.value.length - 1];
   return quantity === 'host_fraction' ? 1 : Number.POSITIVE_INFINITY;
 }
 

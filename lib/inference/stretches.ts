@@ -83,3 +83,22 @@ export function logarithmic(from: number, to: number, logDensity: LogDensity): S
     },
   };
 }
+
+/** [from, to] in x itself: for densities that are smooth up to both ends. */
+export function linear(from: number, to: number, logDensity: LogDensity): Stretch {
+  const span = to - from;
+  const logSpan = Math.log(span);
+  return {
+    from,
+    to,
+    isReversed: false,
+    toX: (v) => Math.min(to, from + span * v),
+    toV: (x) => (x - from) / span,
+    logDensity(v) {
+      const x = from + span * v;
+      const complement = 1 - to + span * (1 - v);
+      const logComplement = Math.log(complement);
+      return logDensity({ x, logX: Math.log(x), complement, logComplement }) + logSpan;
+    },
+  };
+}

@@ -1,13 +1,21 @@
 import { expect, test } from 'vitest';
 import {
+  type CandidateTreatment,
+  detectionShape,
   hostFractionUpperLimit,
   poissonBinomial,
+  type RatePosterior,
   type RatePrior,
   ratePosterior,
   upperLimit,
 } from '@/lib/inference';
+import { normalDensity } from '@/lib/numerics/normal';
+import { integrate } from '@/lib/numerics/quadrature';
 import { gammaP, logGamma } from '@/lib/numerics/special';
+import { populationDensity } from '@/lib/population';
+import { type DetectionInputs, measuredDetection } from './support/check-detection';
 import { differences, readChecks, runCheckFile } from './support/check-file';
+import { checkedPopulation, type PopulationInputs } from './support/check-populations';
 
 function numberPosterior(exposure: number, detections: number, prior: RatePrior) {
   return ratePosterior({
@@ -34,6 +42,35 @@ function fractionPosterior(
 
 /** Flat and unbounded, for the mean number. */
 const FLAT: RatePrior = { law: 'gamma', shape: 1, rate: 0 };
+
+interface CandidateInputs {
+  exposure: number;
+  confirmed: number;
+  real_probabilities: number[];
+  max: number;
+}
+
+type Treatment =
+  | { treatment: 'fixed' }
+  | Omit<Extract<CandidateTreatment, { treatment: 'rate-dependent' }>, 'entries'>;
+
+function numberWithCandidates(inputs: CandidateInputs, treatment: Treatment) {
+  return ratePosterior({
+    likelihood: 'mean-number',
+    completeness: Float64Array.of(inputs.exposure),
+    detectedStars: new Array<number>(inputs.confirmed).fill(0),
+    prior: { law: 'uniform', max: inputs.max },
+    candidates: {
+      ...treatment,
+      entries: inputs.real_probabilities.map((probability) => ({ star: 0, probability })),
+    },
+  });
+}
+
+const summarise = (posterior: RatePosterior, level: number) => ({
+  mean: posterior.mean,
+  upper_limit: upperLimit(posterior, level),
+});
 
 /** Sum of Poisson probabilities of the counts whose limit is at or above the true rate. */
 function coverage(exposure: number, level: number, rates: number[], prior: RatePrior): number[] {
@@ -66,8 +103,43 @@ function jeffreysDensity(completeness: number[], fractions: number[]): number[] 
   return fractions.map((f) => posterior.priorDensity(f));
 }
 
+interface DensityInputs {
+  detection: DetectionInputs;
+  population: PopulationInputs;
+}
+
+/** The same mean with many more places: the measurement's own law, summed inside the ranges. */
+function exactDensity({ detection, population: inputs }: DensityInputs): number {
+  const population = checkedPopulation(inputs);
+  const [massRange, axisRange] = [inputs.mass_range_mjup, inputs.axis_range_au];
+  const along = (
+    best: number,
+    sigma: number,
+    [low, high]: [number, number],
+    f: (x: number) => number,
+  ) =>
+    integrate(
+      (z) => f(best * Math.exp(sigma * z)) * normalDensity(z),
+      Math.max(-9, Math.log(low / best) / sigma),
+      Math.min(9, Math.log(high / best) / sigma),
+      20,
+    );
+  return along(detection.mass_mjup, detection.sigma_ln_mass, massRange, (m) =>
+    along(detection.axis_au, detection.sigma_ln_axis, axisRange, (a) =>
+      populationDensity(population, m, a),
+    ),
+  );
+}
+
 runCheckFile('inference', {
   runners: {
+    'detection density': (inputs: DensityInputs) => ({
+      quadrature_7x7: detectionShape(
+        checkedPopulation(inputs.population),
+        measuredDetection(inputs.detection),
+      ),
+      exact: exactDensity(inputs),
+    }),
     'flat prior': ({ exposure, detections, max, level }) => {
       const posterior = numberPosterior(exposure, detections, { law: 'uniform', max });
       return {
@@ -109,6 +181,45 @@ runCheckFile('inference', {
       coverage(exposure, level, rates, FLAT),
     'coverage of the Jeffreys upper limit': ({ exposure, level, rates }) =>
       coverage(exposure, level, rates, { law: 'jeffreys' }),
+    'candidates fixed probabilities': (inputs) => ({
+      number_real_pmf: poissonBinomial(inputs.real_probabilities),
+      ...summarise(numberWithCandidates(inputs, { treatment: 'fixed' }), inputs.level),
+    }),
+    'candidates rate-dependent': (inputs) =>
+      summarise(
+        numberWithCandidates(inputs, {
+          treatment: 'rate-dependent',
+          referenceRate: inputs.reference_rate,
+        }),
+        inputs.level,
+      ),
+    'candidates host fraction': (inputs) =>
+      summarise(
+        ratePosterior({
+          likelihood: 'host-fraction',
+          completeness: Float64Array.from(inputs.completeness_per_star as number[]),
+          detectedStars: inputs.confirmed_star_indices,
+          prior: { law: 'uniform', max: 1 },
+          candidates: {
+            treatment: 'fixed',
+            entries: (inputs.candidates_index_probability as [number, number][]).map(
+              ([star, probability]) => ({ star, probability }),
+            ),
+          },
+        }),
+        inputs.level,
+      ),
+    'unresolved background': ({ count, background, exposure, level }) =>
+      summarise(
+        ratePosterior({
+          likelihood: 'mean-number',
+          completeness: Float64Array.of(exposure),
+          detectedStars: new Array<number>(count).fill(0),
+          prior: FLAT,
+          background,
+        }),
+        level,
+      ),
     'prior-averaged coverage': ({ exposure, max, level }) => {
       let total = 0;
       for (let k = 0; k < 200; k++) {
@@ -122,9 +233,6 @@ runCheckFile('inference', {
     [ARCSINE]: 'its normalisation is 0.11 % off; held to the closed form in the test below',
     'planned survey': 'prediction for a planned exposure (10) comes with forecasts',
     'stars for limit': 'stars needed (10) come with forecasts',
-    'candidates ': 'undecided candidates (8.4) come with vetting',
-    'unresolved background': 'unresolved background (8.5) comes with candidates',
-    'detection density': 'measurement laws of detections (8.3) come with free indices',
   },
 });
 
