@@ -49,7 +49,14 @@ function isProper(prior: RatePriorInput, likelihood: string): boolean {
 const indicesOnly = ['mass-index', 'semi-major-axis-index', 'both-indices'];
 
 const checks: { [Kind in StudyKind]?: Check<Kind> } = {
-  'free-indices': ({ population }) => {
+  'free-indices': ({ run, population }) => {
+    if (run.recipe.candidates || run.recipe.background) {
+      refuse(
+        'kind',
+        'Free indices count confirmed companions alone: run the analysis without open candidates ' +
+          'and without a background',
+      );
+    }
     if (population.form === 'power-law') return;
     refuse(
       'kind',

@@ -1,10 +1,8 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '@/lib/access/actor';
-import { studyInputsSchema } from '@/lib/schemas/studies';
-import { type ResultOf, type StudyResult, studyResultSchema } from '@/lib/schemas/study-results';
 import { type StudyKind, studySettingsSchema } from '@/lib/schemas/study-settings';
 import { startStudy } from '@/lib/services/studies';
-import { CompletenessMapRow, type RunRow, StudyRow, type SurveyRow, TargetRow } from '@/models';
+import { CompletenessMapRow, type RunRow, type SurveyRow, TargetRow } from '@/models';
 import { withDatabase } from '../support/database';
 import { actorOf, createCollaborationWith } from '../support/people';
 import {
@@ -15,6 +13,7 @@ import {
   buildTarget,
   recipeOf,
 } from '../support/sample';
+import { askToEnd, type GivenSettings } from '../support/study';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
 import { bundleWorker, killWorkers, startWorker } from '../support/worker';
 
@@ -62,26 +61,15 @@ async function analyse(of: SurveyRow[], populationId: string, given = {}): Promi
   return ended.run;
 }
 
-async function ask<Kind extends StudyKind>(of: RunRow, settings: { kind: Kind } & object) {
-  const { id, job } = await startStudy(actor, of.id, studySettingsSchema.parse(settings));
-  const ended = await untilEnded(job.id);
-  expect(ended.fault).toBeNull();
-  const study = await StudyRow.findByPk(id, { rejectOnEmpty: true });
-  const result: StudyResult = studyResultSchema.parse(study.result);
-  expect(study.headline).not.toBe('');
-  return {
-    study,
-    inputs: studyInputsSchema.parse(study.inputs),
-    result: result as ResultOf<Kind>,
-  };
-}
+const ask = <Kind extends StudyKind>(of: RunRow, settings: GivenSettings<Kind>) =>
+  askToEnd<Kind>(actor, of, settings);
 
 const limitOf = (of: RunRow) => of.result?.answer.limit as number;
 const mapCount = () => CompletenessMapRow.count({ where: { collaborationId } });
 
 describe('what moves the limit', () => {
   it('makes the maps of every change anew, and gives the same the second time', async () => {
-    const { result, inputs } = await ask(run, { kind: 'systematics' });
+    const { result, inputs } = await ask<'systematics'>(run, { kind: 'systematics' });
     expect(result.baseline).toBe(limitOf(run));
     expect(result.rows.map(({ change }) => change.change)).toEqual([
       'ages-young',
@@ -111,13 +99,13 @@ describe('what moves the limit', () => {
     expect(inputs.further.length).toBe(result.rows.length);
     const maps = await mapCount();
     const changes = result.rows.map(({ change }) => change);
-    const again = await ask(run, { kind: 'systematics', changes });
+    const again = await ask<'systematics'>(run, { kind: 'systematics', changes });
     expect(again.result).toEqual(result);
     expect(await mapCount()).toBe(maps);
   });
 
   it('gives the limit that a run with the same change gives', async () => {
-    const { result } = await ask(run, {
+    const { result } = await ask<'systematics'>(run, {
       kind: 'systematics',
       changes: [{ change: 'threshold' }, { change: 'eccentricity', law: { law: 'circular' } }],
     });
@@ -161,7 +149,7 @@ describe('what moves the limit', () => {
 
 describe('overlaps', () => {
   it('give the limits that runs by each rule give, within the bounds of any rule', async () => {
-    const { result } = await ask(run, { kind: 'overlap-rules' });
+    const { result } = await ask<'overlap-rules'>(run, { kind: 'overlap-rules' });
     for (const { rule, limit } of result.rules) {
       if (rule === 'refuse') {
         expect(limit).toBeNull();
@@ -191,7 +179,7 @@ describe('overlaps', () => {
 
 describe('which stars carry the limit', () => {
   it('equals runs without a survey, and without a star', async () => {
-    const { result } = await ask(run, { kind: 'influence' });
+    const { result } = await ask<'influence'>(run, { kind: 'influence' });
     expect(result.limit).toBe(limitOf(run));
     expect(result.stars).toHaveLength(5);
     const withoutSouth = await analyse([surveys[0]], run.recipe.populationId);
@@ -218,7 +206,7 @@ describe('which stars carry the limit', () => {
 describe('maps that are stored', () => {
   it('are used as they are, not computed again', async () => {
     const change = { change: 'ages-young' as const };
-    await ask(run, { kind: 'systematics', changes: [change] });
+    await ask<'systematics'>(run, { kind: 'systematics', changes: [change] });
     await query(
       `update completeness_map set node_values = decode(repeat('ffff', octet_length(node_values) / 2), 'hex')
        where collaboration_id = $1
@@ -226,7 +214,7 @@ describe('maps that are stored', () => {
            where s.run_id = $2)`,
       [collaborationId, run.id],
     );
-    const { result } = await ask(run, {
+    const { result } = await ask<'systematics'>(run, {
       kind: 'systematics',
       changes: [change, { change: 'ages-old' }],
     });

@@ -1,11 +1,19 @@
+import type { ResultOf } from '@/lib/schemas/study-results';
+import { answerFreeIndices, type FreeIndicesInput } from '../answers/free-indices';
 import { answerInfluence, type InfluenceInput, type InfluenceOutput } from '../answers/influence';
 import { answerLimit, type LimitOutput } from '../answers/limit';
+import { answerComparison, type ComparisonInput } from '../answers/population-comparison';
 import type { RunQuestion } from '../answers/run-question';
 
 /** Every part of a study that a thread performs, by name. */
 export interface StudyTasks {
   limit: { input: RunQuestion; output: LimitOutput };
   influence: { input: InfluenceInput; output: InfluenceOutput };
+  'free-indices': { input: FreeIndicesInput; output: ResultOf<'free-indices'> };
+  'population-comparison': {
+    input: ComparisonInput;
+    output: ReturnType<typeof answerComparison>;
+  };
 }
 
 type Answers = {
@@ -15,6 +23,8 @@ type Answers = {
 const answers: Answers = {
   limit: answerLimit,
   influence: answerInfluence,
+  'free-indices': answerFreeIndices,
+  'population-comparison': answerComparison,
 };
 
 export type StudyTask = {

@@ -5,15 +5,19 @@ import type { StudyKind } from '@/lib/schemas/study-settings';
 import { inTransaction, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { Work } from '../perform';
+import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
+import { performFreeIndices } from './study-free-indices';
 import { performInfluence } from './study-influence';
 import { performOverlapRules } from './study-overlap-rules';
 import { performSystematics } from './study-systematics';
 import { headlineOf } from './study-words';
 
 const studyKinds: { [Kind in StudyKind]?: StudyPerformer<Kind> } = {
+  'free-indices': performFreeIndices,
   influence: performInfluence,
   'overlap-rules': performOverlapRules,
+  'population-comparison': performComparison,
   systematics: performSystematics,
 };
 
