@@ -55,7 +55,8 @@ interface Candidate {
   spec: ColumnSpec | null;
 }
 
-function findSpec(name: string, kind: KindColumns): ColumnSpec | null {
+/** The column of a kind that a heading means, or null. */
+export function findSpec(name: string, kind: KindColumns): ColumnSpec | null {
   const fold = foldHeading(name);
   const fixed = kind.specs.find((spec) =>
     [spec.name, ...(spec.synonyms ?? [])].some((known) => foldHeading(known) === fold),
@@ -142,8 +143,10 @@ function noteIgnored(
     kind.specs.map((spec) => spec.name),
   );
   const hint = near === null ? '; map it by hand if it is needed' : `; did you mean "${near}"?`;
-  const message = `Column ${quoteFound(label)} is not known and is ignored${hint}`;
-  notes.warn('column-ignored', message, place);
+  const own = table.unknownColumn?.(index - 1);
+  const what = own ? 'Key' : 'Column';
+  const message = `${what} ${quoteFound(label)} is not known and is ignored${hint}`;
+  notes.warn(own?.code ?? 'column-ignored', message, own?.place ?? place);
 }
 
 function duplicateFault(first: Candidate, second: Candidate, table: RawTable): Fault {

@@ -29,7 +29,7 @@ class CsvCollector {
 
   constructor(
     private readonly bytes: Uint8Array,
-    layout: CsvLayout,
+    layout: Pick<CsvLayout, 'start' | 'line'>,
     private readonly maxRows: number,
     private readonly faults: FaultReport,
   ) {
@@ -176,6 +176,16 @@ export function parseCsv(
     return null;
   }
   describeLayout(bytes, layout, notes);
+  return readDelimited(bytes, layout, maxRows, faults);
+}
+
+/** Reads rows of delimited cells below a heading line whose place and separator are known. */
+export function readDelimited(
+  bytes: Uint8Array,
+  layout: Omit<CsvLayout, 'delimiter'> & { delimiter: CsvLayout['delimiter'] | ' ' },
+  maxRows: number,
+  faults: FaultReport,
+): RawTable | null {
   const collector = new CsvCollector(bytes, layout, maxRows, faults);
   const body = bytes.subarray(layout.start);
   try {

@@ -10,7 +10,12 @@ export {
 } from './latex';
 export { uploadLimits } from './limits';
 export { foldName } from './names';
-export { readCompanionSamples, readUpload, type SamplesResult } from './read-upload';
+export {
+  readCompanionSamples,
+  readUpload,
+  readUploadedFile,
+  type SamplesResult,
+} from './read-upload';
 export { placeOf } from './reports';
 export { type CsvCell, type CsvColumn, writeCsv } from './write-csv';
 export { type WrittenTarget, writeTargets } from './write-targets';

@@ -8,6 +8,9 @@ export type UploadKind =
   | 'companions'
   | 'cooling-tables';
 
+/** How the bytes of a file are laid out, told by the first of them. */
+export type Container = 'csv' | 'ecsv' | 'votable' | 'fits' | 'npy' | 'npz' | 'hdf5' | 'json';
+
 /** What a reader did that the person should see: a default, a conversion, something skipped. */
 export interface Note {
   code: string;
@@ -56,6 +59,8 @@ export interface ReadContext {
   columnMap?: Record<string, string>;
   /** Targets of the file that the person leaves out: their rows are not read. */
   leaveOut?: string[];
+  /** The axes of a file that has none: a list, `linspace(a,b,n)` or `geomspace(a,b,n)`. */
+  axes?: { mass?: string; semiMajorAxis?: string };
 }
 
 export interface Magnitude {
@@ -203,7 +208,7 @@ export interface ColumnReading {
 export interface ReadSuccess<K extends UploadKind> {
   ok: true;
   kind: K;
-  container: 'csv';
+  container: Container;
   records: RecordsOfKind[K];
   notes: Note[];
   columns: ColumnReading[];

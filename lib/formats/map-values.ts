@@ -45,6 +45,15 @@ export class CompletenessValues {
     return Number.NaN;
   }
 
+  /** The value of a typed array; NaN there means that nothing is known. */
+  takeTyped(value: number, where: Where): number {
+    this.total += 1;
+    if (Number.isNaN(value)) return this.takeMissing('NaN', where);
+    if (Number.isFinite(value)) return this.takeNumber(value, where);
+    this.countNotFinite(String(value), where);
+    return Number.NaN;
+  }
+
   /** Reports what was counted. */
   finish(): void {
     if (this.notFinite !== null) this.faults.add(this.notFiniteFault(this.notFinite));

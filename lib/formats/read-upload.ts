@@ -1,6 +1,4 @@
-import type { Fault } from '@/lib/errors';
-import { bindColumns } from './columns';
-import { parseCsv } from './csv';
+import { bindColumns, findSpec } from './columns';
 import { foldHeading, splitHeading } from './headings';
 import { type KindReader, kindReaders, sampleReader } from './kind-readers';
 import type {
@@ -14,40 +12,12 @@ import type {
   UploadKind,
 } from './kinds';
 import { withoutLeftOut } from './leave-out';
+import { readMapCube } from './map-cube';
 import { isWideMap, WideMapReading } from './maps-wide';
+import { type Opened, type OpenOptions, openContainer, openText } from './open-container';
 import { TableReading } from './reading';
 import { FaultReport, NoteReport } from './reports';
-import { endingOf, promisesOtherFormat, refuseOtherFormats } from './signatures';
 import type { RawTable } from './table';
-import { refuseBrokenUtf8 } from './utf8';
-
-/** Bytes to a plain table: the place where further containers will be told apart. */
-function openContainer(
-  bytes: Uint8Array,
-  fileName: string,
-  reader: { maxRows: number; what: string },
-  faults: FaultReport,
-  notes: NoteReport,
-): RawTable | null {
-  const refusal = refuseEmpty(bytes, reader.what) ?? refuseOtherFormats(bytes, fileName);
-  const fault = refusal ?? refuseBrokenUtf8(bytes);
-  if (fault !== null) {
-    faults.add(fault);
-    return null;
-  }
-  if (promisesOtherFormat(fileName)) {
-    const message = `The name ends in .${endingOf(fileName)} and the content is CSV text; it is read as CSV`;
-    notes.warn('name-mismatch', message);
-  }
-  return parseCsv(bytes, reader.maxRows, faults, notes);
-}
-
-function refuseEmpty(bytes: Uint8Array, what: string): Fault | null {
-  const isOnlyMark = bytes.length === 3 && bytes[0] === 0xef && bytes[1] === 0xbb;
-  if (bytes.length > 0 && !isOnlyMark) return null;
-  const message = `the file is empty; expected a header line and at least one ${what}`;
-  return { code: 'empty-file', message };
-}
 
 interface Rows<R> {
   records: R[];
@@ -126,36 +96,72 @@ function failure(
   };
 }
 
+/** Reports and limits of one reading. */
+function optionsFor(
+  context: ReadContext,
+  reader: Pick<KindReader<unknown>, 'maxRows' | 'what' | 'columns'>,
+): OpenOptions {
+  const { maxRows, what } = reader;
+  const columns = reader.columns(context);
+  return {
+    context,
+    maxRows,
+    what,
+    isKnownHeading: (heading) =>
+      findSpec(splitHeading(heading).name, columns) !== null ||
+      Object.hasOwn(context.columnMap ?? {}, heading),
+    faults: new FaultReport(),
+    notes: new NoteReport(),
+  };
+}
+
+function readOpened(opened: Opened | null, options: OpenOptions): ReadResult {
+  const { context, faults, notes } = options;
+  const { kind } = context;
+  if (opened === null) return failure(context, [], faults, notes);
+  const { records, columns } = readRecords(opened, options);
+  if (faults.count > 0) return failure(context, columns, faults, notes);
+  // The reader was taken by this very kind, which the types cannot follow.
+  return {
+    ok: true,
+    kind,
+    container: opened.container,
+    records,
+    notes: notes.list(),
+    columns,
+    rowCount: 'table' in opened ? opened.table.rowCount : records.length,
+  } as ReadResult;
+}
+
+function readRecords(opened: Opened, { context, faults, notes }: OpenOptions): Rows<unknown> {
+  const { kind } = context;
+  if ('cube' in opened) {
+    return { records: readMapCube(opened.cube, context, faults, notes), columns: [] };
+  }
+  if (kind === 'completeness-maps') return readMaps(opened.table, context, faults, notes);
+  return readRows(opened.table, kindReaders[kind] as KindReader<unknown>, context, faults, notes);
+}
+
 /**
- * Reads one uploaded file: container by its first bytes, plain table, records of the chosen kind.
+ * Reads one uploaded file: container by its first bytes, plain table or arrays, records of the
+ * chosen kind.
  *
  * A pure function of the bytes and the context, both of which can be sent to a worker. Nothing
  * outside the bytes is read. Every default, conversion, ignored column and rounded value is a
  * note; faults say where they are, and with one fault no record is given.
  */
+export async function readUploadedFile(
+  bytes: Uint8Array,
+  context: ReadContext,
+): Promise<ReadResult> {
+  const options = optionsFor(context, kindReaders[context.kind]);
+  return readOpened(await openContainer(bytes, options), options);
+}
+
+/** The same, at once, for every container but archives (npz) and HDF5. */
 export function readUpload(bytes: Uint8Array, context: ReadContext): ReadResult {
-  const faults = new FaultReport();
-  const notes = new NoteReport();
-  const { kind } = context;
-  const reader = kindReaders[kind];
-  const table = openContainer(bytes, context.fileName, reader, faults, notes);
-  if (table === null) return failure(context, [], faults, notes);
-  const { records, columns } =
-    kind === 'completeness-maps'
-      ? readMaps(table, context, faults, notes)
-      : readRows(table, reader as KindReader<unknown>, context, faults, notes);
-  if (faults.count > 0) return failure(context, columns, faults, notes);
-  const { rowCount } = table;
-  // The reader was taken by this very kind, which the types cannot follow.
-  return {
-    ok: true,
-    kind,
-    container: 'csv',
-    records,
-    notes: notes.list(),
-    columns,
-    rowCount,
-  } as ReadResult;
+  const options = optionsFor(context, kindReaders[context.kind]);
+  return readOpened(openText(bytes, options), options);
 }
 
 export type SamplesResult =
@@ -167,11 +173,12 @@ export function readCompanionSamples(
   bytes: Uint8Array,
   context: Omit<ReadContext, 'kind'>,
 ): SamplesResult {
-  const faults = new FaultReport();
-  const notes = new NoteReport();
   const asCompanions: ReadContext = { ...context, kind: 'companions' };
-  const table = openContainer(bytes, context.fileName, sampleReader, faults, notes);
-  if (table === null) return failure(asCompanions, [], faults, notes);
+  const options = optionsFor(asCompanions, sampleReader);
+  const { faults, notes } = options;
+  const opened = openText(bytes, options);
+  if (opened === null || !('table' in opened)) return failure(asCompanions, [], faults, notes);
+  const { table } = opened;
   const { records, columns } = readRows(table, sampleReader, asCompanions, faults, notes);
   if (faults.count > 0) return failure(asCompanions, columns, faults, notes);
   return { ok: true, records, notes: notes.list(), columns, rowCount: table.rowCount };

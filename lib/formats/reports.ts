@@ -24,8 +24,8 @@ export function quoteFound(text: string): string {
 export function placeOf(entry: Place): string {
   const parts = [
     entry.line === undefined ? '' : `line ${entry.line}`,
-    entry.row === undefined ? '' : `row ${entry.row}`,
     entry.item ?? '',
+    entry.row === undefined ? '' : `row ${entry.row}`,
     entry.column === undefined ? '' : `column "${entry.column}"`,
   ].filter(Boolean);
   return parts.length === 0 ? 'file' : parts.join(', ');
@@ -84,7 +84,7 @@ export class NoteReport extends Report<Note> {
   private write(level: Note['level'], code: string, message: string, place: Place): void {
     if (this.levels.get(code) !== 'warning') this.levels.set(code, level);
     const { row, item, ...rest } = place;
-    const where = [row === undefined ? '' : `row ${row}`, item ?? ''].filter(Boolean).join(', ');
+    const where = [item ?? '', row === undefined ? '' : `row ${row}`].filter(Boolean).join(', ');
     this.add({ code, level, ...rest, ...(where ? { item: where } : {}), message });
   }
 }

@@ -28,4 +28,6 @@ export interface RawTable {
   headingPlace: Place;
   /** Where a row stands; rows count from 0. */
   rowPlace(row: number): Place;
+  /** How a column that no kind knows is told, where not as a heading. */
+  unknownColumn?(index: number): { code: string; place: Place };
 }
