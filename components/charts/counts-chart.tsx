@@ -20,7 +20,7 @@ export interface CountsChartProps {
   height?: number;
 }
 
-const margin = { left: 52, right: 12, top: 62, bottom: 48 };
+const margin = { left: 52, right: 12, top: 74, bottom: 48 };
 /** Bars that no screen could show. */
 const NEGLIGIBLE = 5e-4;
 

@@ -151,7 +151,6 @@ export function LimitFieldChart(props: LimitFieldChartProps) {
         x0={frame.left}
         x1={frame.right}
         name={xAxis.name}
-        isLastAtEdge
       />
       <LeftAxis
         ticks={axisTicks(yAxis, frame.bottom - frame.top)}
@@ -173,7 +172,7 @@ function axisScale({ at, isLog }: FieldAxis, from: number, to: number) {
 
 function axisTicks({ at, isLog }: FieldAxis, length: number) {
   const [low, high] = [at[0], at[at.length - 1]];
-  return isLog ? logTicks(low, high, length * 1.1) : linearTicks(low, high, length, 56);
+  return isLog ? logTicks(low, high, length) : linearTicks(low, high, length, 56);
 }
 
 /** The run's own place, with its limit. */

@@ -2,7 +2,7 @@ import type { ComponentType } from 'react';
 import type { Fault } from '@/lib/errors';
 import type { RateQuantity } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { ResultOf } from '@/lib/schemas/study-results';
@@ -17,7 +17,7 @@ export interface AskedRun {
   inputs: RunInputs;
   result: RunResult;
   /** The population of the run; null until it is known. */
-  definition: PopulationDefinition | null;
+  definition: ListedDefinition | null;
   quantity: RateQuantity;
   credibleLevel: number;
 }

@@ -3,6 +3,7 @@ import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { countsInWords } from './counts/counts-words';
 import type { KindEntry } from './kind-entry';
 import { limitMapInWords } from './limit-map/limit-map-words';
+import { sweepInWords } from './sweep/sweep-words';
 
 const AnswerWaits = () => (
   <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
@@ -27,6 +28,12 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     ),
     settingsInWords: limitMapInWords,
     loadTables: async () => (await import('./limit-map/limit-map-tables')).limitMapTables,
+  },
+  sweep: {
+    Form: dynamic(async () => (await import('./sweep/sweep-form')).SweepForm, whileForm),
+    Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer, whileAnswer),
+    settingsInWords: sweepInWords,
+    loadTables: async () => (await import('./sweep/sweep-tables')).sweepTables,
   },
   counts: {
     Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, whileForm),

@@ -23,7 +23,9 @@ export function faultsByField(faults: Fault[], fields: string[]): Record<string,
   const sentences: Record<string, string> = {};
   for (const { item, ...fault } of faults) {
     const named = (item ?? '').split(', ').find((name) => fields.includes(name)) ?? '';
-    const sentence = describeFault(named === '' ? { ...fault, item } : fault);
+    // That a kind cannot be asked at all is no fault of a field.
+    const isPlaced = named === '' && item !== 'kind';
+    const sentence = describeFault(isPlaced ? { ...fault, item } : fault);
     sentences[named] = [sentences[named], sentence].filter(Boolean).join('. ');
   }
   return sentences;

@@ -1,0 +1,116 @@
+'use client';
+
+import { ProportionalTo } from '@/components/ui/notation';
+import { NumberField } from '@/components/ui/number-field';
+import { SelectField } from '@/components/ui/select-field';
+import { toLogIndex } from '@/lib/population';
+import { formatPlain } from '@/lib/quantities/display';
+import { sweepParameterSchema, sweepSettingsSchema } from '@/lib/schemas/study-settings';
+import type { FormProps } from '../kind-entry';
+import { SettingsFrame } from '../settings-frame';
+import { readNumber, useSettingsForm } from '../use-settings-form';
+import {
+  ownValue,
+  quotedValue,
+  type SweepParameter,
+  sweepParameters,
+  usualSpan,
+} from './sweep-parameters';
+
+const FIRST: SweepParameter = 'semi-major-axis-max';
+/** A plane of both takes the square of it. */
+const countOf = (over: SweepParameter) => (over === 'both-indices' ? '21' : '31');
+const plain = (value: number) => String(Number(value.toPrecision(6)));
+
+export function SweepForm(props: FormProps<'sweep'>) {
+  const { asked, start } = props;
+  const spanOf = (over: SweepParameter) => {
+    const span = usualSpan(over, asked);
+    return {
+      over,
+      from: plain(quotedValue(over, span.from)),
+      to: plain(quotedValue(over, span.to)),
+      count: countOf(over),
+    };
+  };
+  const form = useSettingsForm({
+    schema: sweepSettingsSchema,
+    start: start
+      ? {
+          over: start.over,
+          from: plain(quotedValue(start.over, start.from)),
+          to: plain(quotedValue(start.over, start.to)),
+          count: String(start.count),
+        }
+      : spanOf(FIRST),
+    read: (draft) => {
+      const isIndex = sweepParameters[draft.over as SweepParameter].unit === 'index';
+      const stored = (text: string) => {
+        const value = readNumber(text);
+        return isIndex && value !== undefined ? toLogIndex(value, 'linear') : (value ?? text);
+      };
+      return {
+        kind: 'sweep',
+        over: draft.over,
+        from: stored(draft.from),
+        to: stored(draft.to),
+        count: readNumber(draft.count) ?? draft.count,
+      };
+    },
+    faults: props.faults,
+    onAsk: props.onAsk,
+  });
+  const over = form.draft.over as SweepParameter;
+  const { unit } = sweepParameters[over];
+  const own = ownValue(over, asked);
+  return (
+    <SettingsFrame
+      isBusy={props.isBusy}
+      disabledReason={props.disabledReason}
+      error={form.errors['']}
+      onSubmit={form.submit}
+      note={
+        <>
+          {unit === 'index' && (
+            <>
+              Indices of d<i>N</i>/d<i>M</i>
+              <ProportionalTo />
+              <i>M</i>
+              <sup>α</sup> and d<i>N</i>/d<i>a</i>
+              <ProportionalTo />
+              <i>a</i>
+              <sup>β</sup>.{' '}
+            </>
+          )}
+          {own === undefined
+            ? 'Everything else stays as in the run.'
+            : `The run used ${formatPlain(quotedValue(over, own))}${unit === 'index' ? '' : ` ${unit}`}; everything else stays as in the run.`}
+        </>
+      }
+    >
+      <div className="w-60 max-md:w-full">
+        <SelectField
+          {...form.field('over')}
+          label="Limit against"
+          options={sweepParameterSchema.options.map((value) => ({
+            value,
+            label: sweepParameters[value].name,
+          }))}
+          onChange={(event) => form.setDraft(spanOf(event.target.value as SweepParameter))}
+        />
+      </div>
+      {(['from', 'to'] as const).map((name) => (
+        <div key={name} className="w-32 max-md:w-[calc(50%-10px)]">
+          <NumberField
+            {...form.field(name)}
+            label={name === 'from' ? 'From' : 'To'}
+            unit={unit === 'index' ? undefined : unit}
+          />
+        </div>
+      ))}
+      <div className="w-24 max-md:w-full">
+        <NumberField {...form.field('count')} label="Values" step={1} />
+      </div>
+    </SettingsFrame>
+  );
+}

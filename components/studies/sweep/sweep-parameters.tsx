@@ -1,0 +1,124 @@
+import type { ReactNode } from 'react';
+import { JupiterMassText } from '@/components/charts/axes';
+import type { FieldAxis } from '@/components/charts/limit-field-chart';
+import { formatIndex } from '@/components/populations/law-notation';
+import { fromLogIndex } from '@/lib/population';
+import { formatPlain } from '@/lib/quantities/display';
+import type { RunInputs } from '@/lib/schemas/runs';
+import type { SettingsOf } from '@/lib/schemas/study-settings';
+import type { AskedRun } from '../kind-entry';
+
+export type SweepParameter = SettingsOf<'sweep'>['over'];
+
+interface Parameter {
+  /** "largest semi-major axis". */
+  name: string;
+  unit: 'AU' | 'MJ' | 'index';
+}
+
+export const sweepParameters: Record<SweepParameter, Parameter> = {
+  'semi-major-axis-max': { name: 'largest semi-major axis', unit: 'AU' },
+  'semi-major-axis-min': { name: 'smallest semi-major axis', unit: 'AU' },
+  'mass-min': { name: 'smallest planet mass', unit: 'MJ' },
+  'mass-max': { name: 'largest planet mass', unit: 'MJ' },
+  'mass-index': { name: 'mass index', unit: 'index' },
+  'semi-major-axis-index': { name: 'semi-major-axis index', unit: 'index' },
+  'both-indices': { name: 'both indices', unit: 'index' },
+};
+
+/** Indices are stored per natural logarithm and quoted as dN/dM and dN/da. */
+export function quotedValue(over: SweepParameter, stored: number): number {
+  return sweepParameters[over].unit === 'index'
+    ? Number(fromLogIndex(stored, 'linear').toFixed(9))
+    : stored;
+}
+
+const symbols: Partial<Record<SweepParameter, ReactNode>> = {
+  'mass-index': (
+    <>
+      mass index <tspan fontStyle="italic">α</tspan>, per d<tspan fontStyle="italic">M</tspan>
+    </>
+  ),
+  'semi-major-axis-index': (
+    <>
+      semi-major-axis index <tspan fontStyle="italic">β</tspan>, per d
+      <tspan fontStyle="italic">a</tspan>
+    </>
+  ),
+};
+
+/** The axis of a sweep, at stored values, as it is quoted. */
+export function sweepAxis(over: SweepParameter, stored: number[]): FieldAxis {
+  const { name, unit } = sweepParameters[over];
+  if (unit === 'index') {
+    return {
+      at: stored.map((value) => quotedValue(over, value)),
+      isLog: false,
+      name: symbols[over] ?? name,
+      plainName: name,
+      say: (value) => `${name === 'mass index' ? 'α' : 'β'} = ${formatIndex(value)}`,
+    };
+  }
+  return {
+    at: stored,
+    isLog: true,
+    name:
+      unit === 'AU' ? (
+        `${name}, AU`
+      ) : (
+        <>
+          {name}, <JupiterMassText />
+        </>
+      ),
+    plainName: name,
+    say: (value) => `${formatPlain(value, 3)} ${unit === 'AU' ? 'AU' : 'Jupiter masses'}`,
+  };
+}
+
+/** The value that the run itself used, as stored; undefined for a population without it. */
+export function ownValue(over: SweepParameter, { definition }: AskedRun): number | undefined {
+  if (definition?.form !== 'power-law') return undefined;
+  switch (over) {
+    case 'semi-major-axis-max':
+      return definition.semiMajorAxisMaxAu;
+    case 'semi-major-axis-min':
+      return definition.semiMajorAxisMinAu;
+    case 'mass-min':
+      return definition.massMinMjup;
+    case 'mass-max':
+      return definition.massMaxMjup;
+    case 'mass-index':
+      return definition.massIndex;
+    case 'semi-major-axis-index':
+      return definition.semiMajorAxisIndex;
+    case 'both-indices':
+      return undefined;
+  }
+}
+
+/** A span worth asking for: the grid on one side, the other end of the run's range on the other. */
+export function usualSpan(over: SweepParameter, asked: AskedRun): { from: number; to: number } {
+  const { massMjup, semiMajorAxisAu } = asked.inputs.grid as RunInputs['grid'];
+  const last = (nodes: number[]) => nodes[nodes.length - 1];
+  const round = (value: number) => Number(value.toPrecision(2));
+  const { definition } = asked;
+  const box = definition?.form === 'power-law' ? definition : undefined;
+  switch (over) {
+    case 'semi-major-axis-max':
+      return {
+        from: round((box?.semiMajorAxisMinAu ?? semiMajorAxisAu[0]) * 1.5),
+        to: round(last(semiMajorAxisAu)),
+      };
+    case 'semi-major-axis-min':
+      return {
+        from: round(semiMajorAxisAu[0]),
+        to: round((box?.semiMajorAxisMaxAu ?? last(semiMajorAxisAu)) / 1.5),
+      };
+    case 'mass-max':
+      return { from: round((box?.massMinMjup ?? massMjup[0]) * 1.5), to: round(last(massMjup)) };
+    case 'mass-min':
+      return { from: round(massMjup[0]), to: round((box?.massMaxMjup ?? last(massMjup)) / 1.5) };
+    default:
+      return { from: -2, to: 1 };
+  }
+}

@@ -1,0 +1,14 @@
+import { formatRange } from '@/lib/quantities/display';
+import type { SettingsOf } from '@/lib/schemas/study-settings';
+import { quotedValue, sweepParameters } from './sweep-parameters';
+
+/** "largest semi-major axis 30–1000 AU, 31 values". */
+export function sweepInWords({ over, from, to, count }: SettingsOf<'sweep'>): string {
+  const { name, unit } = sweepParameters[over];
+  const values = over === 'both-indices' ? `${count} × ${count} values` : `${count} values`;
+  if (unit === 'index') {
+    const [low, high] = [quotedValue(over, from), quotedValue(over, to)];
+    return `${name} ${formatRange(low, high, '').replace('–', ' to ')}, ${values}`;
+  }
+  return `${name} ${formatRange(from, to, unit)}, ${values}`;
+}
