@@ -7,6 +7,8 @@ export interface Amount {
   resolution: Record<'smooth' | 'hard', Resolution>;
   smoothMaps: number[];
   hardMaps: number[];
+  /** Surveys that are read back from the database. */
+  storedMaps: number[];
 }
 
 export const FULL: Amount = {
@@ -17,6 +19,7 @@ export const FULL: Amount = {
   },
   smoothMaps: [12, 78, 400, 5000],
   hardMaps: [12, 78],
+  storedMaps: [78, 400, 5000],
 };
 
 export const QUICK: Amount = {
@@ -27,4 +30,5 @@ export const QUICK: Amount = {
   },
   smoothMaps: [12, 78, 400],
   hardMaps: [12, 78],
+  storedMaps: [78, 400],
 };

@@ -17,9 +17,10 @@ function targetsFor(stars: number): Target[] {
 
 function linesOf(survey: MappedSurvey, rounds: number): Line[] {
   const { stars, maps, detections } = survey;
+  const prior = { law: 'uniform', max: 1 } as const;
   const asked: AnswerSettings = {
     likelihood: 'host-fraction',
-    prior: { law: 'uniform', max: 1 },
+    prior,
     detections,
     level: LEVEL,
   };
@@ -31,7 +32,7 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
     credibleLevel: LEVEL,
     detections: 'counted',
     likelihood: asked.likelihood,
-    prior: asked.prior,
+    prior,
   } as const;
   const { limit } = answerFromView(view, asked);
   const errors: Errors = { limit: relativeError(limit, referenceLimit(survey)) };

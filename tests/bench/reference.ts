@@ -26,6 +26,20 @@ export interface Resolution {
 export function referenceMap(
   star: StarInputs,
   threshold: 'hard' | 'smooth',
+  resolution: Resolution,
+): Float64Array {
+  const key = JSON.stringify([star.name, threshold, resolution]);
+  const map = known.get(key) ?? computeReference(star, threshold, resolution);
+  known.set(key, map);
+  return map;
+}
+
+/** Several groups hold the same few stars against their references. */
+const known = new Map<string, Float64Array>();
+
+function computeReference(
+  star: StarInputs,
+  threshold: 'hard' | 'smooth',
   { ageNodesPerSide, distanceNodes }: Resolution,
 ): Float64Array {
   if (!('distancePc' in star.distance)) throw new RangeError(`${star.name} needs a distance`);

@@ -83,3 +83,39 @@ export function shareOf(subject: Work, lengthMs: number, rounds: number) {
     ratio: spreadOf(times.map((ms) => ms / lengthMs)),
   };
 }
+
+/** A piece of work that says itself how long it took [ms]: another process, or one that waits. */
+export type TimedWork = () => Promise<number>;
+
+/** Milliseconds on the wall of work that other processes have a part in. */
+export async function wallMilliseconds(run: () => Promise<number> | number): Promise<number> {
+  const start = performance.now();
+  kept += await run();
+  return performance.now() - start;
+}
+
+/**
+ * As `compare`, for work that times itself.
+ *
+ * @param scale the yardstick's time is multiplied by it, to stand for as much work as the subject's
+ */
+export async function compareTimed(
+  subject: TimedWork,
+  yardstick: TimedWork,
+  rounds: number,
+  scale = 1,
+): Promise<Comparison> {
+  const subjectMs: number[] = [];
+  const yardstickMs: number[] = [];
+  for (let round = 0; round < rounds; round++) {
+    if (round % 2 === 0) subjectMs.push(await subject());
+    yardstickMs.push(await yardstick());
+    if (round % 2 === 1) subjectMs.push(await subject());
+  }
+  return {
+    rounds,
+    medianMs: spreadOf(subjectMs).median,
+    yardstickMs: spreadOf(yardstickMs).median,
+    ratio: spreadOf(subjectMs.map((ms, round) => (scale * yardstickMs[round]) / ms)),
+  };
+}

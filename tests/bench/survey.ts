@@ -20,6 +20,8 @@ import {
   type SensitivitySettings,
   type StarInputs,
 } from '@/lib/sensitivity';
+import { builtInMagnitudes } from '@/lib/sensitivity/built-in-law';
+import type { Survey } from './survey-file';
 
 export const SEED = 'invented survey 1';
 export const BAND = 'H';
@@ -91,6 +93,22 @@ function inventCurve(between: (low: number, high: number) => number, normal: () 
 
 export function inventStars(count: number): StarInputs[] {
   return Array.from({ length: count }, (_, index) => inventStar(index));
+}
+
+/**
+ * An invented survey as a file holds it: with its cooling relation as a table, so that another
+ * engine needs no other input.
+ */
+export function inventSurvey(count: number, threshold: 'hard' | 'smooth'): Survey {
+  const ageMyr = logSpacedAxis(1, 10_000, 241);
+  const { magnitudes } = builtInMagnitudes(GRID.massMjup, ageMyr, BAND);
+  const table = { name: 'built-in law', massMjup: GRID.massMjup, ageMyr, magnitudes };
+  return {
+    grid: GRID,
+    settings: settings(threshold),
+    cooling: { kind: 'table', table: { ...table, magnitudes: { [BAND]: magnitudes } } },
+    stars: inventStars(count),
+  };
 }
 
 /** Smooth maps of a survey as they are stored, with what was found in them. */

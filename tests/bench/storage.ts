@@ -1,0 +1,158 @@
+import { createHash } from 'node:crypto';
+import { closeSync, fsyncSync, mkdtempSync, openSync, readSync, rmSync, writeSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { Client } from 'pg';
+import { decodeMap, ENGINE_VERSION } from '@/lib/sensitivity';
+import { CollaborationRow, CompletenessMapRow, database } from '@/models';
+import { packMap } from '@/models/map-values';
+import { createTestDatabase, dropTestDatabase } from '@/tests/support/database';
+import type { Amount } from './amount';
+import { copyColumn } from './copy-binary';
+import type { Line, Target } from './report';
+import { compareTimed, wallMilliseconds } from './rounds';
+import { GRID, mapSurvey } from './survey';
+
+/** As a run reads its maps. */
+const READ_AT_ONCE = 200;
+const SIZE = GRID.massMjup.length * GRID.semiMajorAxisAu.length;
+const TARGETS: Target[] = [
+  { of: 'ratio', bound: 'at most', must: 3 },
+  { of: 'max', bound: 'at most', must: 0 },
+];
+
+interface Stored {
+  collaborationId: string;
+  digests: string[];
+  file: string;
+}
+
+const aligned = new Uint16Array(SIZE);
+const alignedBytes = new Uint8Array(aligned.buffer);
+
+/** Adds a stored map to a sum: bytes that may begin anywhere, little-endian as this machine is. */
+function add(sum: Float64Array, bytes: Uint8Array): void {
+  alignedBytes.set(bytes);
+  for (let i = 0; i < SIZE; i++) sum[i] += aligned[i];
+}
+
+async function storeSurvey(stars: number, folder: string): Promise<Stored> {
+  const { maps } = mapSurvey(stars);
+  const { id: collaborationId } = await CollaborationRow.create({
+    slug: `survey-${stars}`,
+    name: `Survey of ${stars}`,
+  });
+  const file = path.join(folder, `${stars}.maps`);
+  const descriptor = openSync(file, 'w');
+  const digests: string[] = [];
+  for (let first = 0; first < stars; first += READ_AT_ONCE) {
+    const rows = [];
+    for (let star = first; star < Math.min(stars, first + READ_AT_ONCE); star++) {
+      const packed = packMap(decodeMap(maps.subarray(star * SIZE, (star + 1) * SIZE)));
+      writeSync(descriptor, packed.nodeValues);
+      const digest = createHash('sha256').update(`${stars} ${star}`).digest('hex');
+      digests.push(digest);
+      rows.push({
+        collaborationId,
+        digest,
+        origin: 'computed' as const,
+        engineVersion: ENGINE_VERSION,
+        massMjup: [...GRID.massMjup],
+        semiMajorAxisAu: [...GRID.semiMajorAxisAu],
+        ...packed,
+        inputs: {},
+      });
+    }
+    await CompletenessMapRow.bulkCreate(rows);
+  }
+  fsyncSync(descriptor);
+  closeSync(descriptor);
+  return { collaborationId, digests, file };
+}
+
+/** One map after the other from a file in the page cache. */
+function sumFile({ file, digests }: Stored): Float64Array {
+  const sum = new Float64Array(SIZE);
+  const bytes = Buffer.alloc(2 * SIZE);
+  const descriptor = openSync(file, 'r');
+  for (let star = 0; star < digests.length; star++) {
+    readSync(descriptor, bytes, 0, bytes.length, null);
+    add(sum, bytes);
+  }
+  closeSync(descriptor);
+  return sum;
+}
+
+/** Rows by digest, some at a time, as a run reads its maps. */
+async function sumModels({ collaborationId, digests }: Stored): Promise<Float64Array> {
+  const sum = new Float64Array(SIZE);
+  for (let first = 0; first < digests.length; first += READ_AT_ONCE) {
+    const digest = digests.slice(first, first + READ_AT_ONCE);
+    const rows = await CompletenessMapRow.findAll({ where: { collaborationId, digest } });
+    for (const { nodeValues } of rows) add(sum, nodeValues);
+  }
+  return sum;
+}
+
+async function sumCopy(client: Client, { collaborationId }: Stored): Promise<Float64Array> {
+  const sum = new Float64Array(SIZE);
+  const statement =
+    `copy (select node_values from completeness_map where collaboration_id = '${collaborationId}' ` +
+    'order by id) to stdout (format binary)';
+  await copyColumn(client, statement, (bytes) => add(sum, bytes));
+  return sum;
+}
+
+async function linesOf(stars: number, stored: Stored, client: Client, rounds: number) {
+  const expected = sumFile(stored);
+  const ways = [
+    ['as a run reads', () => sumModels(stored), TARGETS],
+    ['COPY binary', () => sumCopy(client, stored), TARGETS],
+  ] as const;
+  const lines: Line[] = [];
+  for (const [way, read, targets] of ways) {
+    const sum = await read();
+    const max = sum.reduce((most, value, i) => Math.max(most, Math.abs(value - expected[i])), 0);
+    const compared = await compareTimed(
+      () => wallMilliseconds(async () => (await read())[0]),
+      () => wallMilliseconds(() => sumFile(stored)[0]),
+      rounds,
+    );
+    const { median, min, max: most } = compared.ratio;
+    lines.push({
+      name: `storage, read and sum, ${way}`,
+      stars,
+      rounds,
+      medianMs: compared.medianMs,
+      // Here the product is the slower one: how many times the yardstick's time it takes.
+      ratio: { median: 1 / median, min: 1 / most, max: 1 / min },
+      unit: 'times',
+      yardstick: `file in the page cache and sum, ${compared.yardstickMs.toPrecision(2)} ms`,
+      errors: { max },
+      targets: [...targets],
+    });
+  }
+  return lines;
+}
+
+/** Reading all maps of a survey through PostgreSQL and summing them, against a plain file. */
+export async function storageLines({ rounds, storedMaps }: Amount): Promise<Line[]> {
+  const made = await createTestDatabase();
+  process.env.DATABASE_URL = made.url;
+  const folder = mkdtempSync(path.join(tmpdir(), 'bench-storage-'));
+  const client = new Client({ connectionString: made.url, application_name: 'bench' });
+  try {
+    database();
+    await client.connect();
+    const lines: Line[] = [];
+    for (const stars of storedMaps) {
+      const stored = await storeSurvey(stars, folder);
+      lines.push(...(await linesOf(stars, stored, client, rounds)));
+    }
+    return lines;
+  } finally {
+    await client.end();
+    rmSync(folder, { recursive: true, force: true });
+    await dropTestDatabase(made);
+  }
+}
