@@ -1,5 +1,6 @@
 import { type RateQuestion, ratePosterior, upperLimit } from '@/lib/inference';
 import type { Amount } from './amount';
+import { freePosteriorLines } from './posterior-free';
 import type { Line } from './report';
 import { compare } from './rounds';
 import { type MappedSurvey, mapSurvey } from './survey';
@@ -20,8 +21,13 @@ export function relativeError(value: number, reference: number): number {
   return Math.abs(value / reference - 1);
 }
 
+/** The host fraction with fixed indices, and with both free. */
+export function posteriorLines(amount: Amount): Line[] {
+  return [...fixedLines(amount), ...freePosteriorLines(amount)];
+}
+
 /** Host fraction of a fixed population: posterior and limit, against a plain grid. */
-export function posteriorLines({ rounds }: Amount): Line[] {
+function fixedLines({ rounds }: Amount): Line[] {
   return [78, 400].map((stars) => {
     const survey = mapSurvey(stars);
     const { completeness } = survey;
