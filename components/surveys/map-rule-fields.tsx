@@ -12,23 +12,13 @@ export function MapRuleFields({ settings }: { settings?: Rules }) {
   return (
     <>
       <NumberField
-        label="Resolution element, for limits close to the star"
+        label="Resolution element, for thresholds near the star"
         name="smallSampleFwhm"
         unit="arcsec"
         min={0}
         max={10}
         defaultValue={settings?.smallSample?.fwhmArcsec}
-        hint="Raises the limits where few resolution elements tell the noise (Mawet et al. 2014). Empty: curves as given, right where they are corrected already."
-      />
-      <SelectField
-        label="Orbits beside a stellar companion"
-        name="unstableZone"
-        defaultValue={settings?.unstableZone ?? 'ignore'}
-        options={[
-          { value: 'ignore', label: 'kept' },
-          { value: 'remove', label: 'unstable ones taken out' },
-        ]}
-        hint="Where the targets list the companion’s orbit: on the axes that it makes unstable (Holman & Wiegert 1999) the map is 0."
+        hint="Raises the thresholds where few resolution elements tell the noise (Mawet et al. 2014). Empty: curves as given, right where they are corrected already."
       />
       <SelectField
         label="Candidates without an answer"
@@ -67,6 +57,16 @@ export function MapRuleFields({ settings }: { settings?: Rules }) {
         max={13_800}
         defaultValue={settings?.fieldAge?.maxMyr}
         hint="Uniform in log age between the two. Both empty: every star belongs to its group."
+      />
+      <SelectField
+        label="Orbits beside a stellar companion"
+        name="unstableZone"
+        defaultValue={settings?.unstableZone ?? 'ignore'}
+        options={[
+          { value: 'ignore', label: 'kept' },
+          { value: 'remove', label: 'unstable ones taken out' },
+        ]}
+        hint="Where the targets list the companion’s orbit: on the axes that it makes unstable (Holman & Wiegert 1999) the map is 0."
       />
     </>
   );

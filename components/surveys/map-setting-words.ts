@@ -47,7 +47,7 @@ export function describeMapSettings(settings: MapSettings, coolingName: string |
 function describeRules(settings: MapSettings): string[] {
   const { smallSample, unstableZone, candidates, candidateHalfWidthArcsec, fieldAge } = settings;
   const words: string[] = [];
-  if (smallSample) words.push(`limits raised for elements of ${smallSample.fwhmArcsec}″`);
+  if (smallSample) words.push(`thresholds raised for elements of ${smallSample.fwhmArcsec}″`);
   if (unstableZone === 'remove') words.push('unstable orbits taken out');
   if (candidates === 'cut') words.push(`cut ${candidateHalfWidthArcsec}″ around candidates`);
   if (fieldAge) words.push(`field age ${fieldAge.minMyr}–${fieldAge.maxMyr} Myr`);

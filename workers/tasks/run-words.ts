@@ -29,7 +29,7 @@ export function describeDetection(settings: SensitivitySettings): string {
   const parts = [thresholds[threshold]];
   if (smallSample) {
     parts.push(
-      `limits near the star raised for few resolution elements of ${formatPlain(smallSample.fwhmArcsec)} arcsec (Mawet et al. 2014)`,
+      `thresholds near the star raised for few resolution elements of ${formatPlain(smallSample.fwhmArcsec)} arcsec (Mawet et al. 2014)`,
     );
   }
   if (candidates) {

@@ -58,7 +58,7 @@ describe('one line about the maps', () => {
       'approximate cooling law; eccentricities uniform from 0 to 0.95; smooth threshold',
     );
     expect(describeMapSettings(full, null)).toContain(
-      'limits raised for elements of 0.06″; unstable orbits taken out; cut 0.2″ around candidates; field age 200–5000 Myr',
+      'thresholds raised for elements of 0.06″; unstable orbits taken out; cut 0.2″ around candidates; field age 200–5000 Myr',
     );
   });
 });
