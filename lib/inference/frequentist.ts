@@ -146,15 +146,43 @@ export function hostFractionUpperLimit(
 ): number {
   checkConfidence(confidenceLevel);
   checkCount(detections, completeness.length);
-  const excess = (fraction: number) => {
-    const counts = poissonBinomial(
-      completeness.map((c) => fraction * c),
-      detections,
-    );
-    let below = 0;
-    for (const p of counts) below += p;
-    return below - (1 - confidenceLevel);
-  };
+  const excess = (fraction: number) =>
+    chanceOfAtMost(completeness, fraction, detections) - (1 - confidenceLevel);
   if (detections === completeness.length || excess(1) >= 0) return 1;
+  return findRoot(excess, 0, 1, { absoluteTolerance: 1e-14 });
+}
+
+/** P(K <= most) at a fraction, K the exact count of f C_j. */
+function chanceOfAtMost(completeness: Float64Array, fraction: number, most: number): number {
+  const counts = poissonBinomial(
+    completeness.map((c) => fraction * c),
+    most,
+  );
+  return counts.reduce((sum, p) => sum + p, 0);
+}
+
+/**
+ * Lower confidence limit on the fraction of stars with a companion, stars unequally complete.
+ *
+ * Solves P(K >= k | f) = 1 - level, K the exact Poisson-binomial count of f C_j.
+ *
+ * @param completeness mean completeness of each star, shape [star], 0..1
+ * @param detections k, stars with a counted detection
+ * @param confidenceLevel scalar [fraction], one-sided
+ * @returns fraction of stars; 0 without a detection, 1 where even f = 1 makes k too rare
+ * @throws RangeError for a count or level outside its domain
+ * @source equals Clopper & Pearson 1934 where every completeness is 1
+ */
+export function hostFractionLowerLimit(
+  completeness: Float64Array,
+  detections: number,
+  confidenceLevel: number,
+): number {
+  checkConfidence(confidenceLevel);
+  checkCount(detections, completeness.length);
+  if (detections === 0) return 0;
+  const excess = (fraction: number) =>
+    confidenceLevel - chanceOfAtMost(completeness, fraction, detections - 1);
+  if (excess(1) <= 0) return 1;
   return findRoot(excess, 0, 1, { absoluteTolerance: 1e-14 });
 }

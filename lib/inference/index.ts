@@ -11,6 +11,8 @@ export type {
 } from './answer';
 export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation } from './answer';
 export { backgroundUpperLimit } from './background';
+export type { FrequentistCompanions, FrequentistRow } from './beside';
+export { frequentistBeside } from './beside';
 export { MOST_CANDIDATES } from './candidates';
 export type {
   CandidateTreatment,
@@ -30,11 +32,13 @@ export { displayRange, posteriorCurve } from './curve';
 export { detectionShape, logDetectionShapes } from './detection-shape';
 export type { BayesFactorWords, EvidenceSettings, PopulationEvidence } from './evidence';
 export { bayesFactorWords, populationEvidence } from './evidence';
+export { feldmanCousinsInterval } from './feldman-cousins';
 export type { FreeIndexPosterior, FreeIndexQuestion } from './free-indices';
 export { freeIndexPosterior } from './free-indices';
 export {
   binomialLowerLimit,
   binomialUpperLimit,
+  hostFractionLowerLimit,
   hostFractionUpperLimit,
   poissonBinomial,
   poissonLowerLimit,

@@ -1,5 +1,6 @@
 import {
   equalTailedInterval,
+  feldmanCousinsInterval,
   highestDensityInterval,
   poissonLowerLimit,
   poissonUpperLimit,
@@ -55,6 +56,12 @@ runCheckFile('intervals', {
   runners: {
     'Kraft-Burrows-Nousek': shortest,
     'credible upper limit with background': upper,
+    'Feldman-Cousins': ({ count, background, level }: Count) =>
+      feldmanCousinsInterval(count, background, level),
+    'Feldman-Cousins table': ({ counts, background, level }) =>
+      counts.map((count: number) => feldmanCousinsInterval(count, background, level)),
+    'Feldman-Cousins table IV, n = 0': ({ count, backgrounds, level }) =>
+      backgrounds.map((b: number) => feldmanCousinsInterval(count, b, level)[1]),
     'astropy binomial wilson': ({ successes, trials, level }: Binomial) =>
       wilsonInterval(successes, trials, level),
     'astropy binomial flat': betaInterval(1),
@@ -63,8 +70,5 @@ runCheckFile('intervals', {
       counts.map((k: number) => poissonUpperLimit(k, 1, level)),
     'Gehrels table 2 lower': ({ counts, level }) =>
       counts.map((k: number) => poissonLowerLimit(k, 1, level)),
-  },
-  later: {
-    'Feldman-Cousins': 'intervals with background (10) come with candidates',
   },
 });
