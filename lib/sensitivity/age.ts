@@ -154,7 +154,8 @@ function cutAt(logRatio: number, sigma: number): number {
   return logRatio < 0 ? -Infinity : Infinity;
 }
 
-function requireAgeLaw(law: AgeLaw): void {
+/** @throws RangeError for ages not positive or out of order, or half of a pair */
+export function requireAgeLaw(law: AgeLaw): void {
   const { medianMyr, lowerMyr, upperMyr, minMyr, maxMyr } = law;
   for (const [name, value] of Object.entries({ medianMyr, lowerMyr, upperMyr, minMyr, maxMyr })) {
     if (value !== undefined && !(value > 0 && Number.isFinite(value))) {

@@ -1,9 +1,13 @@
 import { logOf } from '@/lib/numerics/grid';
+import { splitAge } from './age-split';
+import { coolNodes } from './cooling';
+import { coolingPaths } from './cooling-paths';
 import { directIntegral } from './direct-integral';
-import { levelProduct } from './level-product';
-import { levelRows } from './level-rows';
+import { ageUnder } from './field-age';
+import { levelMap } from './level-map';
+import { fillMagnitudeWeights, type SingleAges } from './magnitude-weights';
 import { requireGrid } from './map-grid';
-import { exactRows, tabulatedRows } from './separation-rows';
+import { exactRows } from './separation-rows';
 import { type PreparedStar, prepareStar } from './star-model';
 import type {
   CompletenessMap,
@@ -16,13 +20,7 @@ import type {
 import { removeUnstableNodes } from './unstable-zone';
 
 /** Changes whenever the same inputs would give other numbers, so that stored maps are not reused. */
-export const ENGINE_VERSION: string = '1';
-
-/** Widest cell of limiting magnitude, in units of the smooth threshold's own width (1.09 mag / n). */
-const CELL_SIGMAS = 1.3;
-const WIDEST_CELL_MAG = 0.4;
-/** A threshold narrower than this is followed no further: no curve is known so well. */
-const NARROWEST_CELL_MAG = 0.01;
+export const ENGINE_VERSION: string = '2';
 
 /**
  * Completeness of one star, P(detected | companion of mass m and semi-major axis a), without random
@@ -54,16 +52,7 @@ export function computeCompletenessMap(
   requireGrid(grid);
   const prepared = prepareStar(star, cooling, grid.massMjup, settings);
   const logAxis = logOf(grid.semiMajorAxisAu);
-  const usesLevels = settings.threshold === 'smooth' && prepared.curves.length === 1;
-  const completeness = usesLevels
-    ? integrateByLevels(prepared, settings, grid.massMjup.length, logAxis)
-    : directIntegral(
-        prepared,
-        exactRows(settings.eccentricity, logAxis),
-        grid.massMjup.length,
-        logAxis.length,
-        settings.threshold,
-      );
+  const completeness = integrateStar(star, prepared, cooling, grid.massMjup, logAxis, settings);
   for (let i = 0; i < completeness.length; i++) {
     completeness[i] = Math.min(1, Math.max(0, completeness[i]));
   }
@@ -81,18 +70,52 @@ export function computeCompletenessMap(
   };
 }
 
-function integrateByLevels(
-  star: PreparedStar,
-  settings: SensitivitySettings,
-  masses: number,
+/** Adds up what is seen at single ages and what is seen over stretches of age. */
+function integrateStar(
+  star: StarInputs,
+  prepared: PreparedStar,
+  cooling: CoolingRelation,
+  massMjup: Float64Array,
   logAxis: Float64Array,
+  settings: SensitivitySettings,
 ): Float64Array {
-  const [curve] = star.curves;
-  const widestCell = Math.max(
-    NARROWEST_CELL_MAG,
-    Math.min(WIDEST_CELL_MAG, CELL_SIGMAS / curve.nSigma),
-  );
-  const fill = tabulatedRows(settings.eccentricity, logAxis);
-  const rows = levelRows(star, curve, fill, logAxis.length, widestCell);
-  return levelProduct(rows, star, curve, masses, logAxis.length);
+  const { eccentricity, threshold, massOutsideTable } = settings;
+  const direct = (of: PreparedStar) =>
+    directIntegral(
+      of,
+      exactRows(eccentricity, logAxis),
+      massMjup.length,
+      logAxis.length,
+      threshold,
+    );
+  const [curve] = prepared.curves;
+  const isHard = threshold === 'hard';
+  if (prepared.curves.length > 1 || (isHard && settings.ageNodesPerSide !== undefined)) {
+    return direct(prepared);
+  }
+  const age = splitAge(ageUnder(star, settings), prepared.ages, settings, curve.nSigma);
+  const { band } = star.curves[0];
+  const { magnitudes } = coolNodes(cooling, band, massMjup, age.single.values, settings, star.name);
+  const single = { weights: age.single.weights, magnitudes };
+  const paths = coolingPaths(cooling, band, massMjup, massOutsideTable, age.cellMag);
+  const byLevels = (ages: SingleAges) =>
+    levelMap(
+      prepared,
+      (range, memory, at) =>
+        fillMagnitudeWeights(paths, age.sides, ages, threshold, curve.nSigma, range, memory, at),
+      massMjup.length,
+      age.cellMag,
+      eccentricity,
+      logAxis,
+    );
+  if (!isHard) return byLevels(single);
+  const none = { weights: new Float64Array(0), magnitudes: new Float64Array(0) };
+  const ofSingle =
+    single.weights.length > 0
+      ? direct({ ...prepared, ages: age.single, curves: [{ ...curve, magnitudes }] })
+      : null;
+  if (age.sides.length === 0 && ofSingle) return ofSingle;
+  const completeness = byLevels(none);
+  if (ofSingle) for (let i = 0; i < ofSingle.length; i++) completeness[i] += ofSingle[i];
+  return completeness;
 }

@@ -45,7 +45,7 @@ function mapOf(starName: string, optionName: string): number[][] {
     starInputs(star, [curve], option.age_nodes_per_half === 0),
     { kind: 'built-in' },
     grid,
-    sensitivitySettings(option.eccentricity, option.rule),
+    sensitivitySettings(option.eccentricity, option.rule, option.age_nodes_per_half),
   );
   const columns = survey.axes_au.length;
   return survey.masses_mjup.map((_, i) =>

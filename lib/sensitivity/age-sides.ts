@@ -1,0 +1,197 @@
+import { normalCumulative, normalDensity, normalQuantile } from '@/lib/numerics/normal';
+import { gaussLegendre } from '@/lib/numerics/quadrature';
+import { ageParts, requireAgeLaw, type WeightedNodes } from './age';
+import type { AgeLaw, AgeOfStar } from './types';
+
+/**
+ * One side of an age law in x = ln t, between its hard ends: a normal law cut to that side, or equal
+ * chances along x. A law has a kink at its median and none within a side.
+ */
+export interface AgeSide {
+  /** Probability that the age lies on this side. */
+  weight: number;
+  /** Ends of the support, [ln Myr]. */
+  from: number;
+  to: number;
+  /** Median and spread of the normal law; spread 0 marks equal chances. */
+  centre: number;
+  sigma: number;
+}
+
+/** An age as single values and sides, whose weights together sum to 1. */
+export interface AgeSides {
+  /** Ages without error, [Myr]. */
+  points: WeightedNodes;
+  sides: AgeSide[];
+}
+
+/** P(age < t) of one side and its integral over ln t, at any number of places. */
+export interface SideMoments {
+  /** Added up from 0 to the side's weight, shape [place]. */
+  chance: Float64Array;
+  /** ∫ chance d ln t from the side's beginning, same shape. */
+  area: Float64Array;
+}
+
+/** A normal law ends here: 6e-7 of it lies beyond both ends. */
+const LAST_SIGMA = 5;
+const STEPS_PER_SIGMA = 512;
+
+/** Φ on equal steps of z, with G(z) = z Φ(z) + φ(z) as the integral of the lines between. */
+let normalTable: { chance: Float64Array; area: Float64Array } | null = null;
+
+function standardNormal() {
+  if (normalTable) return normalTable;
+  const nodes = 2 * LAST_SIGMA * STEPS_PER_SIGMA + 2;
+  const chance = new Float64Array(nodes);
+  const area = new Float64Array(nodes);
+  for (let i = 0; i < nodes; i++) chance[i] = normalCumulative(i / STEPS_PER_SIGMA - LAST_SIGMA);
+  area[0] = -LAST_SIGMA * chance[0] + normalDensity(LAST_SIGMA);
+  for (let i = 1; i < nodes; i++) {
+    area[i] = area[i - 1] + (0.5 * (chance[i - 1] + chance[i])) / STEPS_PER_SIGMA;
+  }
+  normalTable = { chance, area };
+  return normalTable;
+}
+
+/**
+ * The sides of every law of an age, and what has no error.
+ *
+ * @param age see AgeOfStar
+ * @throws RangeError for ages not positive or out of order, half of a pair, or probabilities that
+ *   do not sum to 1
+ */
+export function ageSides(age: AgeOfStar): AgeSides {
+  const sides: AgeSide[] = [];
+  const values: number[] = [];
+  const weights: number[] = [];
+  for (const { probability, age: law } of ageParts(age)) {
+    for (const side of sidesOfLaw(law)) {
+      const weight = probability * side.weight;
+      if (!(weight > 0)) continue;
+      if (side.to > side.from) sides.push({ ...side, weight });
+      else {
+        values.push(law.medianMyr);
+        weights.push(weight);
+      }
+    }
+  }
+  return {
+    points: { values: Float64Array.from(values), weights: Float64Array.from(weights) },
+    sides,
+  };
+}
+
+function sidesOfLaw(law: AgeLaw): AgeSide[] {
+  requireAgeLaw(law);
+  const { medianMyr, lowerMyr, upperMyr, minMyr, maxMyr } = law;
+  const centre = Math.log(medianMyr);
+  const at = { centre, sigma: 0, from: centre, to: centre };
+  if (lowerMyr !== undefined && upperMyr !== undefined) {
+    const [below, above] = [Math.log(medianMyr / lowerMyr), Math.log(upperMyr / medianMyr)];
+    const first = Math.max(centre - LAST_SIGMA * below, Math.log(minMyr ?? 0));
+    const last = Math.min(centre + LAST_SIGMA * above, Math.log(maxMyr ?? Infinity));
+    // Bounds cut the law before it is normalised, so they move weight from one side to the other.
+    const kept = (end: number, sigma: number) =>
+      sigma > 0 ? normalCumulative(Math.abs(end - centre) / sigma) - 0.5 : 0.5;
+    const [lower, upper] = [kept(first, below), kept(last, above)];
+    const share = 1 / (lower + upper);
+    return [
+      { ...at, weight: lower * share, sigma: below, from: first },
+      { ...at, weight: upper * share, sigma: above, to: last },
+    ];
+  }
+  if (minMyr === undefined || maxMyr === undefined) return [{ ...at, weight: 1 }];
+  return [
+    { ...at, weight: 0.5, from: Math.log(minMyr) },
+    { ...at, weight: 0.5, to: Math.log(maxMyr) },
+  ];
+}
+
+/** Least spread of a side in ln t: how finely a sharp edge in age must be followed. */
+export function spreadOf({ sigma, from, to }: AgeSide): number {
+  return sigma > 0 ? sigma : 0.3 * (to - from);
+}
+
+/**
+ * A side as nodes, for one so narrow that nothing changes much along it.
+ *
+ * @param side see AgeSide
+ * @param count number of Gauss–Legendre nodes in probability
+ * @returns ages [Myr], weights that sum to the side's
+ */
+export function sideNodes(
+  { weight, from, to, centre, sigma }: AgeSide,
+  count: number,
+): WeightedNodes {
+  const { nodes, weights } = gaussLegendre(count);
+  const chanceAt = (x: number) => normalCumulative((x - centre) / sigma);
+  const [low, high] = sigma > 0 ? [chanceAt(from), chanceAt(to)] : [0, 1];
+  const values = nodes.map((node) => {
+    const p = low + 0.5 * (1 + node) * (high - low);
+    return Math.exp(sigma > 0 ? centre + sigma * normalQuantile(p) : from + p * (to - from));
+  });
+  return { values, weights: weights.map((w) => 0.5 * w * weight) };
+}
+
+/**
+ * Chance and area of a side at several places.
+ *
+ * @param side see AgeSide
+ * @param logAge places, [ln Myr], shape [place], not modified; infinities allowed
+ * @param first first place to fill
+ * @param end one past the last
+ * @param out filled in place, from `first` to `end`
+ * Accuracy: 2e-7 of the side's weight; area is the exact integral of the lines behind chance.
+ */
+export function fillSideMoments(
+  side: AgeSide,
+  logAge: Float64Array,
+  first: number,
+  end: number,
+  { chance, area }: SideMoments,
+): void {
+  const { weight, from, to, centre, sigma } = side;
+  const length = to - from;
+  if (sigma === 0) {
+    for (let i = first; i < end; i++) {
+      const x = Math.min(length, Math.max(0, logAge[i] - from));
+      chance[i] = (weight * x) / length;
+      area[i] = (weight * x * x) / (2 * length) + weight * Math.max(0, logAge[i] - to);
+    }
+    return;
+  }
+  const { chance: phi, area: integral } = standardNormal();
+  const perStep = STEPS_PER_SIGMA / sigma;
+  const step = 1 / STEPS_PER_SIGMA;
+  const zero = centre - LAST_SIGMA * sigma;
+  const lookUp = (x: number) => {
+    const place = Math.max(0, (x - zero) * perStep);
+    const k = Math.min(place | 0, phi.length - 2);
+    const t = place - k;
+    const rise = phi[k + 1] - phi[k];
+    return [phi[k] + t * rise, integral[k] + step * t * (phi[k] + 0.5 * t * rise)];
+  };
+  const [startChance, startArea] = lookUp(from);
+  const [endChance, endArea] = lookUp(to);
+  const scale = weight / (endChance - startChance);
+  const whole = scale * (sigma * (endArea - startArea) - startChance * length);
+  for (let i = first; i < end; i++) {
+    const x = logAge[i];
+    if (x <= from) {
+      chance[i] = 0;
+      area[i] = 0;
+    } else if (x >= to) {
+      chance[i] = weight;
+      area[i] = whole + weight * (x - to);
+    } else {
+      const place = (x - zero) * perStep;
+      const k = place | 0;
+      const t = place - k;
+      const rise = phi[k + 1] - phi[k];
+      chance[i] = scale * (phi[k] + t * rise - startChance);
+      const sum = integral[k] + step * t * (phi[k] + 0.5 * t * rise);
+      area[i] = scale * (sigma * (sum - startArea) - startChance * (x - from));
+    }
+  }
+}
