@@ -1,10 +1,10 @@
 import type { Transaction } from 'sequelize';
-import { InputError } from '@/lib/errors';
 import type { Population } from '@/lib/population';
 import type { RatePriorInput } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { SettingsOf, StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { CoolingTableRow, PopulationRow, type RunRow, SurveyRow } from '@/models';
+import { checkSweep, refuse } from './sweep-checks';
 
 interface Asked<Kind extends StudyKind> {
   run: RunRow;
@@ -14,10 +14,6 @@ interface Asked<Kind extends StudyKind> {
   transaction: Transaction;
 }
 type Check<Kind extends StudyKind> = (asked: Asked<Kind>) => Promise<void> | void;
-
-function refuse(item: string, message: string, code = 'not-allowed-here'): never {
-  throw new InputError({ code, item, message });
-}
 
 /** A rate that the run's quantity can have. */
 function checkRate(run: RunRow, item: string, rate: number | undefined): void {
@@ -46,8 +42,6 @@ function isProper(prior: RatePriorInput, likelihood: string): boolean {
   return prior.law !== 'gamma' || prior.rate > 0;
 }
 
-const indicesOnly = ['mass-index', 'semi-major-axis-index', 'both-indices'];
-
 const checks: { [Kind in StudyKind]?: Check<Kind> } = {
   'free-indices': ({ run, population }) => {
     if (run.recipe.candidates || run.recipe.background) {
@@ -65,43 +59,21 @@ const checks: { [Kind in StudyKind]?: Check<Kind> } = {
     );
   },
 
-  sweep: ({ settings: { over, from, to }, population }) => {
-    if (population.form !== 'power-law') {
+  'limit-map': ({ run, settings, population }) => {
+    const { prior, likelihood } = run.recipe;
+    if (!isProper(prior, likelihood)) {
       refuse(
-        'over',
-        'The limit against a cutoff or an index needs a population that is a power law in mass ' +
-          'and semi-major axis: run the analysis with one',
+        'kind',
+        'Where nothing can be seen the limit is the prior’s own, and this prior has no end: give ' +
+          'it a maximum',
       );
     }
-    if (indicesOnly.includes(over)) {
-      if (from < -10 || to > 10) refuse('from', 'Indices lie between -10 and 10', 'out-of-range');
+    if (!settings.tailCumulative || population.form === 'power-law' || population.form === 'shaped')
       return;
-    }
-    if (from <= 0) refuse('from', `Found ${from}; expected more than 0`, 'out-of-range');
-    const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } = population;
-    const ends = {
-      'mass-min': { end: to, edge: massMaxMjup, below: true, item: 'to', unit: 'MJ' },
-      'mass-max': { end: from, edge: massMinMjup, below: false, item: 'from', unit: 'MJ' },
-      'semi-major-axis-min': {
-        end: to,
-        edge: semiMajorAxisMaxAu,
-        below: true,
-        item: 'to',
-        unit: 'AU',
-      },
-      'semi-major-axis-max': {
-        end: from,
-        edge: semiMajorAxisMinAu,
-        below: false,
-        item: 'from',
-        unit: 'AU',
-      },
-    }[over as 'mass-min'];
-    const { end, edge, below, item, unit } = ends;
-    if (below ? end < edge : end > edge) return;
-    const side = below ? 'less than the upper' : 'more than the lower';
-    refuse(item, `Found ${end}; expected ${side} end of the range, ${edge} ${unit}`, 'range-order');
+    refuse('tailCumulative', 'Tails need ranges in mass and semi-major axis that all stars share');
   },
+
+  sweep: ({ settings, population }) => checkSweep(settings, population),
 
   systematics: async ({ run, inputs, settings, transaction }) => {
     const { changes = [] } = settings;

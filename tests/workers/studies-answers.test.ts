@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { ratePosterior } from '@/lib/inference';
 import { freeIndices } from '@/lib/inference/settled-indices';
 import { populationBox } from '@/lib/population';
 import type { StudyKind } from '@/lib/schemas/study-settings';
@@ -100,6 +101,91 @@ describe('populations compared', () => {
     });
     await expect(startStudy(lab.owner, lab.run.id, settings)).rejects.toMatchObject({
       faults: [{ item: 'populationIds.1' }],
+    });
+  });
+});
+
+describe('limit map', () => {
+  it('holds the limit with all companions at a node, and beyond it', async () => {
+    const { result } = await ask<'limit-map'>({ kind: 'limit-map', tailCumulative: true });
+    const { grid } = question;
+    const columns = grid.semiMajorAxisAu.length;
+    const size = grid.massMjup.length * columns;
+    const [row, column] = [3, 2];
+    const node = row * columns + column;
+    const completeness = Float64Array.from(
+      { length: question.maps.length / size },
+      (_, star) => question.maps[star * size + node] / 65_535,
+    );
+    const none = ratePosterior({
+      likelihood: question.likelihood,
+      prior: question.prior,
+      completeness,
+      detectedStars: [],
+    });
+    expect(result.limit[row][column] / none.quantile(0.95)).toBeCloseTo(1, 8);
+    expect(result.summed[row][column]).toBeCloseTo(
+      completeness.reduce((sum, c) => sum + c, 0),
+      12,
+    );
+    const tail = answerRunQuestion({
+      ...question,
+      population: {
+        ...POPULATION,
+        massMinMjup: grid.massMjup[row],
+        semiMajorAxisMinAu: grid.semiMajorAxisAu[column],
+      } as typeof question.population,
+    });
+    expect((result.tail?.[row][column] as number) / tail.limit).toBeCloseTo(1, 8);
+    expect(result.tail?.[0][0]).toBeNull();
+  });
+});
+
+describe('limit against a parameter', () => {
+  it('equals runs with that value, for a cutoff', async () => {
+    const { result } = await ask<'sweep'>({
+      kind: 'sweep',
+      over: 'semi-major-axis-max',
+      from: 40,
+      to: 200,
+      count: 5,
+    });
+    expect(result.value).toHaveLength(5);
+    result.value.forEach((semiMajorAxisMaxAu, i) => {
+      const population = { ...POPULATION, semiMajorAxisMaxAu } as typeof question.population;
+      const direct = answerRunQuestion({ ...question, population });
+      expect(result.limit[i] / direct.limit).toBeCloseTo(1, 8);
+      expect(result.exposure[i]).toBeCloseTo(direct.exposure, 10);
+      expect(result.detections[i]).toBe(semiMajorAxisMaxAu >= 45 ? 1 : 0);
+    });
+    expect(result.limit[4] / limit()).toBeCloseTo(1, 8);
+    expect(result.limitZero[4] / (lab.run.result?.zero.limit as number)).toBeCloseTo(1, 8);
+  });
+
+  it('has a plane for both indices, whose diagonal is the curve', async () => {
+    const { result } = await ask<'sweep'>({
+      kind: 'sweep',
+      over: 'both-indices',
+      from: -1,
+      to: 1,
+      count: 3,
+    });
+    expect(result.plane?.limit).toHaveLength(3);
+    result.value.forEach((_, i) => {
+      expect((result.plane?.limit[i][i] as number) / result.limit[i]).toBeCloseTo(1, 8);
+    });
+  });
+
+  it('is refused where the values leave no range', async () => {
+    const settings = studySettingsSchema.parse({
+      kind: 'sweep',
+      over: 'mass-min',
+      from: 2,
+      to: 50,
+      count: 5,
+    });
+    await expect(startStudy(lab.owner, lab.run.id, settings)).rejects.toMatchObject({
+      faults: [{ item: 'to', code: 'range-order' }],
     });
   });
 });

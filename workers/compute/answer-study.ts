@@ -2,14 +2,18 @@ import type { ResultOf } from '@/lib/schemas/study-results';
 import { answerFreeIndices, type FreeIndicesInput } from '../answers/free-indices';
 import { answerInfluence, type InfluenceInput, type InfluenceOutput } from '../answers/influence';
 import { answerLimit, type LimitOutput } from '../answers/limit';
+import { answerLimitMap, type LimitMapInput } from '../answers/limit-map';
 import { answerComparison, type ComparisonInput } from '../answers/population-comparison';
 import type { RunQuestion } from '../answers/run-question';
+import { answerSweep, type SweepInput } from '../answers/sweep';
 
 /** Every part of a study that a thread performs, by name. */
 export interface StudyTasks {
   limit: { input: RunQuestion; output: LimitOutput };
   influence: { input: InfluenceInput; output: InfluenceOutput };
   'free-indices': { input: FreeIndicesInput; output: ResultOf<'free-indices'> };
+  'limit-map': { input: LimitMapInput; output: ResultOf<'limit-map'> };
+  sweep: { input: SweepInput; output: ResultOf<'sweep'> };
   'population-comparison': {
     input: ComparisonInput;
     output: ReturnType<typeof answerComparison>;
@@ -24,6 +28,8 @@ const answers: Answers = {
   limit: answerLimit,
   influence: answerInfluence,
   'free-indices': answerFreeIndices,
+  'limit-map': answerLimitMap,
+  sweep: answerSweep,
   'population-comparison': answerComparison,
 };
 

@@ -9,6 +9,7 @@ import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
 import { performFreeIndices } from './study-free-indices';
 import { performInfluence } from './study-influence';
+import { performLimitMap, performSweep } from './study-limits';
 import { performOverlapRules } from './study-overlap-rules';
 import { performSystematics } from './study-systematics';
 import { headlineOf } from './study-words';
@@ -16,6 +17,8 @@ import { headlineOf } from './study-words';
 const studyKinds: { [Kind in StudyKind]?: StudyPerformer<Kind> } = {
   'free-indices': performFreeIndices,
   influence: performInfluence,
+  'limit-map': performLimitMap,
+  sweep: performSweep,
   'overlap-rules': performOverlapRules,
   'population-comparison': performComparison,
   systematics: performSystematics,
