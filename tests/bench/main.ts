@@ -3,6 +3,7 @@ import { parseArgs } from 'node:util';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
 import project from '@/package.json';
 import { type Amount, FULL, QUICK } from './amount';
+import { GRID, GRIDS } from './grid';
 import { liveLines } from './live';
 import { mapLines } from './maps';
 import { numpyLines } from './numpy';
@@ -43,7 +44,7 @@ const YARDSTICK_NOTE = () =>
     ? 'NumPy is not installed (python3-numpy): maps are held against the Monte Carlo in this process.'
     : 'Maps are held against the Monte Carlo in this process and against one in NumPy beside it.';
 
-const USAGE = `Usage: npm run bench -- [--quick] [--json] [--only ${Object.keys(groups).join('|')}]`;
+const USAGE = `Usage: npm run bench -- [--quick] [--json] [--grid 100] [--only ${Object.keys(groups).join('|')}]`;
 
 function readArguments() {
   const { values } = parseArgs({
@@ -51,10 +52,12 @@ function readArguments() {
       quick: { type: 'boolean', default: false },
       json: { type: 'boolean', default: false },
       only: { type: 'string', multiple: true },
+      grid: { type: 'string', default: 'own' },
     },
   });
   const unknown = values.only?.find((name) => !(name in groups));
   if (unknown !== undefined) throw new TypeError(`there is no part named ${unknown}`);
+  if (!(values.grid in GRIDS)) throw new TypeError(`there is no grid named ${values.grid}`);
   return { ...values, only: values.only ?? Object.keys(groups) };
 }
 
@@ -67,6 +70,7 @@ function describeMachine() {
     node,
     v8,
     system: `${process.platform} ${process.arch}`,
+    grid: `${GRID.massMjup.length} × ${GRID.semiMajorAxisAu.length}`,
     processors: `${cpus().length} × ${first?.model ?? 'unknown'}`,
   };
 }

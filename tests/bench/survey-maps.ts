@@ -7,7 +7,7 @@ import { readSurvey, type Survey, writeSurvey } from './survey-file';
 
 const USAGE =
   'Usage: npm run bench -- --survey FILE --maps-out FILE\n' +
-  '       npm run bench -- --survey-out FILE [--stars N] [--threshold smooth|hard]';
+  '       npm run bench -- --survey-out FILE [--stars N] [--threshold smooth|hard] [--grid 100]';
 
 function* mapsOf({ stars, cooling, grid, settings }: Survey): Iterable<Float64Array> {
   for (const star of stars) {
@@ -24,6 +24,7 @@ function main(): void {
       'survey-out': { type: 'string' },
       stars: { type: 'string', default: '78' },
       threshold: { type: 'string', default: 'smooth' },
+      grid: { type: 'string' },
     },
   });
   const { survey: from, 'maps-out': to, 'survey-out': invented } = values;

@@ -15,17 +15,18 @@ import {
   type ContrastCurve,
   type CoolingRelation,
   computeCompletenessMap,
-  DEFAULT_GRID,
   encodeMap,
   type SensitivitySettings,
   type StarInputs,
 } from '@/lib/sensitivity';
 import { builtInMagnitudes } from '@/lib/sensitivity/built-in-law';
+import { GRID } from './grid';
 import type { Survey } from './survey-file';
+
+export { GRID };
 
 export const SEED = 'invented survey 1';
 export const BAND = 'H';
-export const GRID = DEFAULT_GRID();
 export const COOLING: CoolingRelation = { kind: 'built-in' };
 export const POPULATION: PowerLawPopulation = {
   form: 'power-law',
