@@ -56,6 +56,14 @@ export type {
 export { limitByIndex, summariseIndices } from './index-summaries';
 export type { IndexRanges, IndexTable } from './index-table';
 export { completenessAtIndices, INDEX_NODES, indexTable } from './index-table';
+export type { Rest, StarInfluence, SurveyRest, Without } from './influence';
+export {
+  groupInfluence,
+  restInfluence,
+  STAR_WARNING,
+  starInfluence,
+  surveyInfluence,
+} from './influence';
 export {
   equalTailedInterval,
   highestDensityInterval,
@@ -67,6 +75,8 @@ export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
 export type { LimitMap, LimitMapQuestion } from './limit-map';
 export { limitMap, sumMaps } from './limit-map';
 export type { CompanionMeasurement, Measured, MeasuredDetection } from './measured-places';
+export type { OverlapBracket } from './overlap-bracket';
+export { overlapBracket } from './overlap-bracket';
 export type { ComparedPopulation, PopulationComparison } from './population-comparison';
 export { comparePopulations } from './population-comparison';
 export type { PairAnswers, PairQuestion } from './population-pairs';
@@ -81,6 +91,7 @@ export { ratePosterior } from './posterior';
 export { priorFor } from './prior-for';
 export type { LimitingEnd, SettledIndices } from './settled-indices';
 export { freeIndices } from './settled-indices';
+export { withoutStars } from './star-selection';
 export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
 export {
   describeLevel,
