@@ -11,6 +11,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
 import { describeFault, type Fault } from '@/lib/errors';
 import type { UploadReport, UploadSettings } from '@/lib/schemas/uploads';
+import { AxisFields } from './axis-fields';
 import type { IncomingEntry } from './incoming-entry';
 
 const SHOWN = 12;
@@ -254,6 +255,9 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
                   onSettings({ ...settings, defaultTarget });
               }}
             />
+          )}
+          {kind === 'completeness-maps' && /\.npy(\.gz)?$/i.test(entry.file.name) && (
+            <AxisFields settings={settings} onSettings={onSettings} />
           )}
           {kind === 'completeness-maps' && (
             <CheckboxField

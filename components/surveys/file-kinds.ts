@@ -46,7 +46,7 @@ export const fileKinds: FileKind[] = [
     label: 'ready maps',
     needs: ['target', 'mass [Mjup]', 'semi_major_axis [AU]', 'completeness'],
     takes: [],
-    note: 'One row a cell, completeness from 0 to 1. Or as a table of one star: semi-major axes in the first line, masses in the first column.',
+    note: 'One row a cell, completeness from 0 to 1. Or as a table of one star: semi-major axes in the first line, masses in the first column. Or as arrays: NPY, NPZ, HDF5 or FITS, semi-major axis fastest.',
   },
   {
     kind: 'companions',

@@ -26,6 +26,13 @@ export const uploadSettingsSchema = z.strictObject({
   /** For curve files and wide maps without a target column. */
   defaultTarget: lineSchema(100).optional(),
   notMeasuredIsZero: z.boolean().optional(),
+  /** The axes of a .npy file, which has none: a list, linspace(a,b,n) or geomspace(a,b,n). */
+  axes: z
+    .strictObject({
+      mass: z.string().max(10_000).optional(),
+      semiMajorAxis: z.string().max(10_000).optional(),
+    })
+    .optional(),
   /** Heading in the file → our column, or '' to leave it out. */
   columnMap: z.record(z.string(), z.string()).optional(),
   /** Name of a cooling table. */

@@ -55,6 +55,7 @@ async function contextOf(source: Source): Promise<ReadContext> {
     notMeasuredIsZero: settings.notMeasuredIsZero,
     columnMap: settings.columnMap,
     leaveOut: settings.leaveOut,
+    axes: settings.axes,
   };
   if (!survey || kind === 'targets') return context;
   const targets = await TargetRow.findAll({ where: { surveyId: survey.id } });
