@@ -9,6 +9,7 @@ import { mapLines } from './maps';
 import { numpyLines } from './numpy';
 import { numpyCommand } from './numpy-process';
 import { posteriorLines } from './posterior';
+import { freePosteriorLines } from './posterior-free';
 import { type Line, linesWithVerdicts, printTable } from './report';
 import { keptSum } from './rounds';
 import { SEED } from './survey';
@@ -19,7 +20,7 @@ type Group = (amount: Amount) => Line[] | Promise<Line[]>;
 /** Maps come first: their first pass has to be the first of the process. */
 const groups: Record<string, Group> = {
   maps: async (amount) => [...mapLines(amount), ...(await numpyLines(amount))],
-  posterior: posteriorLines,
+  posterior: (amount) => [...posteriorLines(amount), ...freePosteriorLines(amount)],
   live: liveLines,
   // Loaded when it is asked for: the others need no database.
   storage: async (amount) => (await import('./storage')).storageLines(amount),
