@@ -128,7 +128,10 @@ function limitNote(analysis: AnalysisView, run: RunSummary): string {
 }
 
 function rangeWords(definition: AnalysisView['population']['definition']): string {
-  const mass = formatRange(definition.massMinMjup, definition.massMaxMjup, '');
+  const mass =
+    definition.form === 'mass-ratio'
+      ? `q ${formatRange(definition.massRatioMin, definition.massRatioMax, '')}`
+      : formatRange(definition.massMinMjup, definition.massMaxMjup, '');
   return `${mass} · ${formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, '')}`;
 }
 

@@ -1,10 +1,10 @@
 import { formatIndex } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
-import { describeLevel, describePrior } from '@/lib/inference';
+import { describeLevel, describePopulation, describePrior } from '@/lib/inference';
 import { fromLogIndex } from '@/lib/population';
 import { formatRange } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import { isPlainPowerLaw, type ListedDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 
 /** One analysis of a comparison, with everything that its number rests on. */
@@ -15,7 +15,7 @@ export interface ComparedRun {
   inputs: RunInputs;
   result: RunResult;
   recipe: AnalysisRecipe;
-  definition: PopulationDefinition;
+  definition: ListedDefinition;
 }
 
 export interface ComparedInput {
@@ -24,6 +24,31 @@ export interface ComparedInput {
   b: string;
   /** A difference by which the two limits answer different questions. */
   changesQuestion: boolean;
+}
+
+function massWords(definition: ListedDefinition): string {
+  return definition.form === 'mass-ratio'
+    ? `${formatRange(definition.massRatioMin, definition.massRatioMax, '')} of the star's mass`
+    : formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ');
+}
+
+/** Index by index where both are plain power laws, else each law in its words. */
+function lawRows(
+  { definition: one }: ComparedRun,
+  { definition: other }: ComparedRun,
+  row: (name: string, words: (run: ComparedRun) => string) => ComparedInput,
+): ComparedInput[] {
+  if (!isPlainPowerLaw(one) || !isPlainPowerLaw(other)) {
+    return [row('Law', ({ definition }) => describePopulation(definition))];
+  }
+  const index = (field: 'massIndex' | 'semiMajorAxisIndex') => (run: ComparedRun) =>
+    isPlainPowerLaw(run.definition)
+      ? formatIndex(fromLogIndex(run.definition[field], 'linear'))
+      : '';
+  return [
+    row('Mass index α', index('massIndex')),
+    row('Axis index β', index('semiMajorAxisIndex')),
+  ];
 }
 
 /** Every input in words, in the order in which a reader asks for it. */
@@ -39,20 +64,13 @@ export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
         ? 'none counted'
         : `${countOf(side.result.counted.length)} counted`,
     ),
-    row(
-      'Planet mass',
-      ({ definition: d }) => formatRange(d.massMinMjup, d.massMaxMjup, 'MJ'),
-      true,
-    ),
+    row('Planet mass', ({ definition }) => massWords(definition), true),
     row(
       'Semi-major axis',
       ({ definition: d }) => formatRange(d.semiMajorAxisMinAu, d.semiMajorAxisMaxAu, 'AU'),
       true,
     ),
-    row('Mass index α', ({ definition: d }) => formatIndex(fromLogIndex(d.massIndex, 'linear'))),
-    row('Axis index β', ({ definition: d }) =>
-      formatIndex(fromLogIndex(d.semiMajorAxisIndex, 'linear')),
-    ),
+    ...lawRows(a, b, row),
     row('Level', ({ result }) => describeLevel(result.credibleLevel), true),
     row(
       'Likelihood',

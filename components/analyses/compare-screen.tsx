@@ -9,7 +9,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SelectField } from '@/components/ui/select-field';
 import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import { type ComparedInput, type ComparedRun, compareInputs } from './compare-differences';
 import { ComparePlate } from './compare-plate';
@@ -25,7 +25,7 @@ interface CompareScreenProps {
     key: string;
     analysis: AnalysisView | null;
     run: RunView | null;
-    population: PopulationView | null;
+    population: ListedPopulation | null;
   }[];
 }
 
@@ -147,7 +147,9 @@ function alignQuery(a: ComparedRun, rows: ComparedInput[]): string {
   const { definition, result } = a;
   const parts: Record<string, string> = {};
   for (const { name } of rows) {
-    if (name === 'Planet mass') parts.mass = `${definition.massMinMjup}-${definition.massMaxMjup}`;
+    if (name === 'Planet mass' && definition.form !== 'mass-ratio') {
+      parts.mass = `${definition.massMinMjup}-${definition.massMaxMjup}`;
+    }
     if (name === 'Semi-major axis') {
       parts.axis = `${definition.semiMajorAxisMinAu}-${definition.semiMajorAxisMaxAu}`;
     }

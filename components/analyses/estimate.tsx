@@ -22,10 +22,13 @@ interface EstimateProps {
   run: RunView | null;
   surveys: SurveyView[];
   setting?: LiveSetting;
+  /** The population has a law that only a run can answer. */
+  needsRun?: boolean;
 }
 
 /** What the choices would give, from maps that a run has used already. */
-export function Estimate({ collaboration, run, surveys, setting }: EstimateProps) {
+export function Estimate(props: EstimateProps) {
+  const { collaboration, run, surveys, setting, needsRun = false } = props;
   const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
   const inputs = run?.inputs ?? undefined;
   const ids = surveys.map((survey) => survey.id).join();
@@ -78,6 +81,7 @@ export function Estimate({ collaboration, run, surveys, setting }: EstimateProps
       ) : (
         <p className="text-ink2 text-note" aria-live="polite">
           {estimateWords({
+            needsRun,
             hasRun: run !== null,
             isLoading,
             error: error === undefined ? undefined : sentenceOf(error),
@@ -91,12 +95,16 @@ export function Estimate({ collaboration, run, surveys, setting }: EstimateProps
 }
 
 function estimateWords(state: {
+  needsRun: boolean;
   hasRun: boolean;
   isLoading: boolean;
   error: string | undefined;
   isUnconstrained: boolean;
   hasSurveys: boolean;
 }): string {
+  if (state.needsRun) {
+    return 'An estimate before the run knows plain power laws only; the run itself answers for this population.';
+  }
   if (!state.hasRun) {
     return 'No run has finished in this collaboration yet, so there are no maps at hand to estimate from. The first run computes the limit itself.';
   }

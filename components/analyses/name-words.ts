@@ -1,5 +1,5 @@
-import { formatRange } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import { describePlanets } from '@/lib/inference';
+import type { ListedDefinition } from '@/lib/schemas/populations';
 
 const numbers = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine'];
 
@@ -14,10 +14,9 @@ export function countSurveys(count: number): string {
 }
 
 /** A name that says what is asked: "Planets of 2–30 MJ at 20–300 AU, four surveys". */
-export function suggestName(definition: PopulationDefinition, surveys: number): string {
-  const mass = formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ');
-  const axis = formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU');
-  return `Planets of ${mass} at ${axis}, ${countSurveys(surveys)}`;
+export function suggestName(definition: ListedDefinition, surveys: number): string {
+  const planets = describePlanets(definition);
+  return `${planets[0].toUpperCase()}${planets.slice(1)}, ${countSurveys(surveys)}`;
 }
 
 /** "A, B and C". */

@@ -11,7 +11,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import { TextField } from '@/components/ui/text-field';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { analysisRecipeSchema } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyList } from '@/lib/schemas/surveys';
 import { DetectionsChoice } from './detections-choice';
@@ -24,7 +24,7 @@ import { SurveyChoice } from './survey-choice';
 interface NewAnalysisProps {
   collaboration: string;
   surveys: SurveyList;
-  populations: PopulationView[];
+  populations: ListedPopulation[];
   /** Newest finished run: its maps give the estimate. */
   previewRun: RunView | null;
   /** Population asked for in the address. */
@@ -127,8 +127,9 @@ export function NewAnalysis(props: NewAnalysisProps) {
             collaboration={collaboration}
             run={previewRun}
             surveys={chosenSurveys}
+            needsRun={population !== undefined && !isPlainPowerLaw(population.definition)}
             setting={
-              checked.success && population
+              checked.success && population && isPlainPowerLaw(population.definition)
                 ? { ...recipe, definition: population.definition }
                 : undefined
             }

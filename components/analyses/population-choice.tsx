@@ -6,11 +6,15 @@ import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
-import type { PopulationDefinition, PopulationView } from '@/lib/schemas/populations';
+import {
+  isPlainPowerLaw,
+  type ListedDefinition,
+  type ListedPopulation,
+} from '@/lib/schemas/populations';
 
 interface PopulationChoiceProps {
   collaboration: string;
-  populations: PopulationView[];
+  populations: ListedPopulation[];
   chosen: string;
   onChange(id: string): void;
   /** Nodes of the maps, where they are known. */
@@ -54,9 +58,14 @@ export function PopulationChoice(props: PopulationChoiceProps) {
           />
           {population && (
             <p className="text-ink2 text-note">
-              <PowerLaws definition={population.definition} />, for planets of{' '}
-              <MassRange definition={population.definition} /> at{' '}
-              <AxisRange definition={population.definition} />.
+              <PowerLaws definition={population.definition} />
+              {isPlainPowerLaw(population.definition) && (
+                <>
+                  , for planets of <MassRange definition={population.definition} /> at{' '}
+                  <AxisRange definition={population.definition} />
+                </>
+              )}
+              .
             </p>
           )}
           {population && grid && reachesBeyond(population.definition, grid) && (
@@ -73,14 +82,18 @@ export function PopulationChoice(props: PopulationChoiceProps) {
   );
 }
 
+/** Whether the ranges pass the maps; those of a mass ratio may, as each star has its own. */
 export function reachesBeyond(
-  definition: PopulationDefinition,
+  definition: ListedDefinition,
   grid: { massMjup: ArrayLike<number>; semiMajorAxisAu: ArrayLike<number> },
 ): boolean {
   const { massMjup, semiMajorAxisAu } = grid;
-  return (
+  const isMassBeyond =
+    definition.form === 'mass-ratio' ||
     definition.massMinMjup < massMjup[0] ||
-    definition.massMaxMjup > massMjup[massMjup.length - 1] ||
+    definition.massMaxMjup > massMjup[massMjup.length - 1];
+  return (
+    isMassBeyond ||
     definition.semiMajorAxisMinAu < semiMajorAxisAu[0] ||
     definition.semiMajorAxisMaxAu > semiMajorAxisAu[semiMajorAxisAu.length - 1]
   );

@@ -4,6 +4,7 @@ import useSWR from 'swr';
 import { populationListSchema } from '@/lib/schemas/population-versions';
 import {
   type CreatePopulation,
+  type ListedPopulation,
   type PopulationDefinition,
   type PopulationView,
   populationSchema,
@@ -12,7 +13,7 @@ import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
 /** Every version that the person may see, newest first. */
-export function usePopulations(collaboration: string, fallback?: PopulationView[]) {
+export function usePopulations(collaboration: string, fallback?: ListedPopulation[]) {
   return useSWR(
     apiPath(collaboration, 'populations'),
     async (path) => (await request(path, populationListSchema)).populations,

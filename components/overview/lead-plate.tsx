@@ -3,7 +3,13 @@ import { HistoryStaircase } from '@/components/charts/history-staircase';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { Icon } from '@/components/ui/icon';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
-import { describeLevel, describePrior } from '@/lib/inference';
+import {
+  describeLevel,
+  describePlanet,
+  describePlanets,
+  describePrior,
+  describeStars,
+} from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { Overview } from '@/lib/schemas/overview';
@@ -44,15 +50,24 @@ export function LeadPlate({
             unit={isFraction ? `${THIN_SPACE}%` : undefined}
           />
           <p className="statement">
-            {isFraction ? 'of stars host at least one planet of' : 'planets of'}{' '}
-            <b>
-              <MassRange definition={definition} />
-            </b>{' '}
-            at{' '}
-            <b>
-              <AxisRange definition={definition} />
-            </b>
-            {!isFraction && ' per 100 stars'}
+            {isFraction && `of ${describeStars(definition)} host `}
+            {definition.form === 'systems' ? (
+              <b>
+                {isFraction ? `one ${describePlanet(definition)}` : describePlanets(definition)}
+              </b>
+            ) : (
+              <>
+                {isFraction ? 'at least one planet of' : 'planets of'}{' '}
+                <b>
+                  <MassRange definition={definition} />
+                </b>{' '}
+                at{' '}
+                <b>
+                  <AxisRange definition={definition} />
+                </b>
+              </>
+            )}
+            {!isFraction && ` per 100 ${describeStars(definition)}`}
           </p>
           <div className="mt-4">
             <Conditions

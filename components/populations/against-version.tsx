@@ -6,7 +6,7 @@ import type { LiveSample } from '@/components/runs/live-sample';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatRange } from '@/lib/quantities/display';
-import type { PopulationDefinition, PopulationView } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { BuilderSetting } from './builder-setting';
 import { quoteIndex } from './law-notation';
 import { previewAnswer } from './preview-figures';
@@ -16,46 +16,52 @@ interface Change {
   before: string;
   now: string;
   /** The version with this change alone. */
-  alone: PopulationDefinition;
+  alone: PowerLawDefinition;
 }
 
 /** Each part that differs from a version, in input and in limit. */
 export function AgainstVersion({
   version,
+  before,
+  usedBy,
   setting,
   sample,
 }: {
-  version: PopulationView;
+  version: number;
+  /** The definition of that version. */
+  before: PowerLawDefinition;
+  /** Analyses that rest on it. */
+  usedBy: string[];
   setting: BuilderSetting;
   /** Undefined without maps: then the inputs alone are compared. */
   sample?: LiveSample;
 }) {
   const { definition, convention, prior, credibleLevel } = setting;
-  const changes = changesOf(version.definition, definition, convention);
+  const changes = changesOf(before, definition, convention);
   const alone = JSON.stringify(changes.map((change) => change.alone));
   const limits = useMemo(() => {
     if (!sample) return undefined;
-    const limit = (of: PopulationDefinition) =>
+    const limit = (of: PowerLawDefinition) =>
       previewAnswer(sample, { definition: of, prior, credibleLevel })?.withDetections?.limit ??
       null;
     return {
-      before: limit(version.definition),
+      before: limit(before),
       now: limit(definition),
-      each: (JSON.parse(alone) as PopulationDefinition[]).map(limit),
+      each: (JSON.parse(alone) as PowerLawDefinition[]).map(limit),
     };
-  }, [sample, version.definition, definition, prior, credibleLevel, alone]);
+  }, [sample, before, definition, prior, credibleLevel, alone]);
 
   return (
     <section className="min-w-0">
-      <SectionOpener title={`Against version ${version.version}`} />
+      <SectionOpener title={`Against version ${version}`} />
       {changes.length === 0 ? (
-        <p className="text-ink2 text-note">Nothing differs from version {version.version}.</p>
+        <p className="text-ink2 text-note">Nothing differs from version {version}.</p>
       ) : (
-        <Table caption={`What differs from version ${version.version}`}>
+        <Table caption={`What differs from version ${version}`}>
           <TableHead>
             <tr>
               <HeadCell>part</HeadCell>
-              <HeadCell isNumeric>version {version.version}</HeadCell>
+              <HeadCell isNumeric>version {version}</HeadCell>
               <HeadCell isNumeric>now</HeadCell>
               {limits && <HeadCell isNumeric>limit, %</HeadCell>}
             </tr>
@@ -89,9 +95,9 @@ export function AgainstVersion({
         </Table>
       )}
       <p className="mt-3 text-ink2 text-note">
-        {version.usedBy.length === 0
-          ? `No analysis uses version ${version.version}.`
-          : `${version.usedBy.join(', ')} ${version.usedBy.length === 1 ? 'uses' : 'use'} version ${version.version} and keep${version.usedBy.length === 1 ? 's' : ''} it.`}{' '}
+        {usedBy.length === 0
+          ? `No analysis uses version ${version}.`
+          : `${usedBy.join(', ')} ${usedBy.length === 1 ? 'uses' : 'use'} version ${version} and keep${usedBy.length === 1 ? 's' : ''} it.`}{' '}
         Saving makes a new version; nothing already run changes.
       </p>
     </section>
@@ -99,15 +105,15 @@ export function AgainstVersion({
 }
 
 function changesOf(
-  before: PopulationDefinition,
-  now: PopulationDefinition,
+  before: PowerLawDefinition,
+  now: PowerLawDefinition,
   convention: BuilderSetting['convention'],
 ): Change[] {
   const changes: Change[] = [];
   const add = (
     name: string,
-    show: (d: PopulationDefinition) => string,
-    part: (keyof PopulationDefinition)[],
+    show: (d: PowerLawDefinition) => string,
+    part: (keyof PowerLawDefinition)[],
   ) => {
     if (part.every((field) => before[field] === now[field])) return;
     const alone = { ...before, ...Object.fromEntries(part.map((field) => [field, now[field]])) };

@@ -13,14 +13,14 @@ import { TRACK, trackOf } from '@/components/runs/tracks';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { BuilderSetting } from './builder-setting';
 import { AxisRange, formatIndex, MassRange, PowerLaw } from './law-notation';
 
 interface BuilderControlsProps {
   setting: BuilderSetting;
-  saved?: PopulationDefinition;
+  saved?: PowerLawDefinition;
   grid: MapGrid;
   /** Where the orbits come from: said, not chosen here. */
   orbits: string;
@@ -38,7 +38,7 @@ const TYPED = { mass: [0.01, 1000], axis: [0.01, 100_000] } as const;
 export function BuilderControls(props: BuilderControlsProps) {
   const { setting, saved, grid, orbits, profiles, traces, onSetting } = props;
   const { definition, convention } = setting;
-  const redefine = (changes: Partial<PopulationDefinition>, isSettled: boolean) =>
+  const redefine = (changes: Partial<PowerLawDefinition>, isSettled: boolean) =>
     onSetting({ ...setting, definition: { ...definition, ...changes } }, isSettled);
   const shift = convention === 'linear' ? 0 : 1;
 

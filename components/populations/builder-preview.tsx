@@ -22,7 +22,7 @@ import {
   formatRange,
   formatSignificant,
 } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { BuilderSetting } from './builder-setting';
 import { formatIndex } from './law-notation';
 import {
@@ -45,7 +45,7 @@ interface BuilderPreviewProps {
   weights: PopulationWeights | null;
   /** "A-31, run 18": whose maps these are. */
   source: string;
-  onDefinition(definition: PopulationDefinition, isSettled: boolean): void;
+  onDefinition(definition: PowerLawDefinition, isSettled: boolean): void;
 }
 
 /** What the surveys would see of the population, and what it would mean for the limit. */
@@ -185,10 +185,10 @@ function Warnings({
 }: {
   map: MapData;
   weights: PopulationWeights;
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   sample: LiveSample;
   setting: BuilderSetting;
-  onDefinition(definition: PopulationDefinition): void;
+  onDefinition(definition: PowerLawDefinition): void;
 }) {
   const share = shareHardlySeen(map, weights);
   const better = useMemo(() => {

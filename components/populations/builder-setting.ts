@@ -8,11 +8,11 @@ import {
 } from '@/components/runs/live-setting';
 import type { RatePrior } from '@/lib/inference';
 import type { IndexConvention } from '@/lib/population';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 
 /** The population itself, and what the preview asks of it. */
 export interface BuilderSetting {
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   /** How the indices are quoted on the screen; stored they are per natural logarithm. */
   convention: IndexConvention;
   /** Prior of the host fraction for the preview; an analysis chooses its own. */
@@ -23,7 +23,7 @@ export interface BuilderSetting {
 }
 
 /** dN/dM ∝ M^−1.3 and dN/da ∝ a^−0.6, stored per logarithm. */
-export const FIRST_DEFINITION: PopulationDefinition = {
+export const FIRST_DEFINITION: PowerLawDefinition = {
   form: 'power-law',
   massMinMjup: 2,
   massMaxMjup: 30,
@@ -33,7 +33,7 @@ export const FIRST_DEFINITION: PopulationDefinition = {
   semiMajorAxisIndex: 0.4,
 };
 
-export function defaultSetting(definition: PopulationDefinition): BuilderSetting {
+export function defaultSetting(definition: PowerLawDefinition): BuilderSetting {
   return {
     definition,
     convention: 'linear',

@@ -1,7 +1,12 @@
 import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
+import { describePopulation } from '@/lib/inference';
 import { fromLogIndex, type IndexConvention } from '@/lib/population';
 import { formatPlain, formatRange, THIN_SPACE } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import {
+  isPlainPowerLaw,
+  type ListedDefinition,
+  type PowerLawDefinition,
+} from '@/lib/schemas/populations';
 
 /** An index with at most three decimals and a true minus sign. */
 export function formatIndex(value: number): string {
@@ -14,7 +19,11 @@ export function quoteIndex(logIndex: number, convention: IndexConvention): strin
   return formatIndex(fromLogIndex(logIndex, convention));
 }
 
-export function MassRange({ definition }: { definition: PopulationDefinition }) {
+export function MassRange({ definition }: { definition: ListedDefinition }) {
+  if (definition.form === 'mass-ratio') {
+    const ratio = formatRange(definition.massRatioMin, definition.massRatioMax, '');
+    return <span>{ratio} of the star’s mass</span>;
+  }
   return (
     <span className="whitespace-nowrap">
       {formatRange(definition.massMinMjup, definition.massMaxMjup, '')}
@@ -24,7 +33,7 @@ export function MassRange({ definition }: { definition: PopulationDefinition }) 
   );
 }
 
-export function AxisRange({ definition }: { definition: PopulationDefinition }) {
+export function AxisRange({ definition }: { definition: ListedDefinition }) {
   return (
     <span className="whitespace-nowrap">
       {formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU')}
@@ -44,7 +53,7 @@ export function PowerLaw({
   convention = 'linear',
 }: {
   variable: keyof typeof variables;
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   convention?: IndexConvention;
 }) {
   const { symbol, field } = variables[variable];
@@ -59,14 +68,15 @@ export function PowerLaw({
   );
 }
 
-/** Both laws, separated by a comma. */
+/** Both laws, separated by a comma; what is not a plain power law in words. */
 export function PowerLaws({
   definition,
   convention = 'linear',
 }: {
-  definition: PopulationDefinition;
+  definition: ListedDefinition;
   convention?: IndexConvention;
 }) {
+  if (!isPlainPowerLaw(definition)) return <>{describePopulation(definition)}</>;
   return (
     <>
       <PowerLaw variable="mass" definition={definition} convention={convention} />

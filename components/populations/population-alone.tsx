@@ -7,7 +7,7 @@ import { useWidth } from '@/components/charts/use-width';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { formatRange } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
 import { drawSeen, PLANETS } from './preview-figures';
 
@@ -25,7 +25,7 @@ export function PopulationAlone({
   grid,
   reason,
 }: {
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   grid: MapGrid;
   /** Why there are no maps. */
   reason: string;

@@ -15,7 +15,11 @@ import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import { populationWeights } from '@/lib/population';
-import type { PopulationDefinition, PopulationView } from '@/lib/schemas/populations';
+import {
+  isPlainPowerLaw,
+  type ListedPopulation,
+  type PowerLawDefinition,
+} from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
@@ -32,34 +36,42 @@ import {
 import { InWords } from './in-words';
 import { PopulationAlone } from './population-alone';
 import { SavePopulation } from './save-population';
+import { StoredPopulation } from './stored-population';
 import { VersionList } from './version-list';
 
 interface PopulationBuilderProps {
   collaboration: string;
   /** All versions, newest first; empty for a new population. */
-  versions: PopulationView[];
+  versions: ListedPopulation[];
   /** The version that is shown. */
-  version?: PopulationView;
+  version?: ListedPopulation;
   /** Newest finished run: its maps carry the preview. */
   previewRun: RunView | null;
   canShare: boolean;
   query: Query;
 }
 
-/** A population under its controls, and at once what the surveys would see of it. */
+/** A population: under its controls where it is a plain power law, else in words. */
 export function PopulationBuilder(props: PopulationBuilderProps) {
-  const { collaboration, versions, version, previewRun, canShare, query } = props;
-  const saved = useMemo(
-    () => defaultSetting(version?.definition ?? FIRST_DEFINITION),
-    [version?.definition],
-  );
+  const { collaboration, versions, version } = props;
+  const start = version?.definition ?? FIRST_DEFINITION;
+  if (isPlainPowerLaw(start)) return <LiveBuilder {...props} start={start} />;
+  return version ? (
+    <StoredPopulation collaboration={collaboration} versions={versions} version={version} />
+  ) : null;
+}
+
+/** A power law under its controls, and at once what the surveys would see of it. */
+function LiveBuilder(props: PopulationBuilderProps & { start: PowerLawDefinition }) {
+  const { collaboration, versions, version, previewRun, canShare, query, start } = props;
+  const saved = useMemo(() => defaultSetting(start), [start]);
   const [setting, setSetting] = useState(() => builderFromQuery(query, saved));
   const [settled, setSettled] = useState(setting);
   const change = (next: BuilderSetting, isSettled: boolean) => {
     setSetting(next);
     if (isSettled) setSettled(next);
   };
-  const redefine = (definition: PopulationDefinition, isSettled: boolean) =>
+  const redefine = (definition: PowerLawDefinition, isSettled: boolean) =>
     change({ ...setting, definition }, isSettled);
   const isChanged = !isSameDefinition(setting.definition, saved.definition);
   useAddressQuery({
@@ -123,7 +135,7 @@ export function PopulationBuilder(props: PopulationBuilderProps) {
         <div className="min-w-0">
           <BuilderControls
             setting={setting}
-            saved={version?.definition}
+            saved={version && start}
             grid={grid}
             orbits={orbitWords(previewRun)}
             profiles={profiles}
@@ -148,7 +160,13 @@ export function PopulationBuilder(props: PopulationBuilderProps) {
           )}
           {version && (
             <div className="mt-7 grid gap-x-9 gap-y-7 lg:grid-cols-2">
-              <AgainstVersion version={version} setting={settled} sample={preview?.sample} />
+              <AgainstVersion
+                version={version.version}
+                before={start}
+                usedBy={version.usedBy}
+                setting={settled}
+                sample={preview?.sample}
+              />
               <VersionList collaboration={collaboration} versions={versions} shown={version} />
             </div>
           )}
@@ -212,7 +230,7 @@ function BuilderState({
   version,
   isChanged,
 }: {
-  version: PopulationView | undefined;
+  version: ListedPopulation | undefined;
   isChanged: boolean;
 }) {
   if (!version) return <StateMark kind="unsaved">Not saved yet</StateMark>;

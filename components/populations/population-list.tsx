@@ -8,12 +8,12 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import type { PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 import { AxisRange, MassRange, PowerLaws } from './law-notation';
 
 interface PopulationListProps {
   collaboration: string;
-  initial: PopulationView[];
+  initial: ListedPopulation[];
   canCreate: boolean;
 }
 
@@ -97,7 +97,7 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
 }
 
 /** The list comes newest version first: the first of each number is the newest. */
-export function newestOfEach(versions: PopulationView[]): PopulationView[] {
+export function newestOfEach(versions: ListedPopulation[]): ListedPopulation[] {
   const seen = new Set<number>();
   return versions.filter((version) => {
     if (seen.has(version.number)) return false;

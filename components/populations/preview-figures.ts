@@ -11,7 +11,7 @@ import {
   populationWeights,
   toLogIndex,
 } from '@/lib/population';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { BuilderSetting } from './builder-setting';
 import { interpolateMap } from './interpolate-map';
 
@@ -27,7 +27,7 @@ const chances = Float64Array.from(
 
 /** Planets drawn from the population; each is seen with the mean completeness at its place. */
 export function drawSeen(
-  definition: PopulationDefinition,
+  definition: PowerLawDefinition,
   map: MapData | undefined,
 ): DrawnCompanions {
   const drawn = drawCompanions(definition, PLANETS, 'preview');
@@ -45,7 +45,7 @@ const MARGIN_POINTS = 60;
 
 /** Density per logarithm along one axis: all planets, and those that would be seen. */
 export function marginOf(
-  definition: PopulationDefinition,
+  definition: PowerLawDefinition,
   map: MapData,
   weights: PopulationWeights,
   axis: 'mass' | 'semiMajorAxis',
@@ -126,7 +126,7 @@ const firstMasses = [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10, 12, 15, 20, 25, 30, 40];
 /** The smallest round mass from which on hardly anything is out of sight. */
 export function betterStart(
   map: MapData,
-  definition: PopulationDefinition,
+  definition: PowerLawDefinition,
 ): { massMinMjup: number; share: number } | null {
   for (const massMinMjup of firstMasses) {
     if (massMinMjup <= definition.massMinMjup || massMinMjup >= definition.massMaxMjup) continue;
@@ -180,6 +180,9 @@ export function limitPlane(
         const view = {
           population,
           completenessPerStar,
+          numberSeenPerStar: null,
+          rateScale: null,
+          hostMassMsun: null,
           exposure: completenessPerStar.reduce((sum, c) => sum + c, 0),
           stars: sample.stars.length,
           shareOutsideMap: weights.shareOutsideMap,

@@ -10,13 +10,13 @@ import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import type { PopulationDefinition, PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 
 interface SavePopulationProps {
   collaboration: string;
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   /** The version that it goes out from. */
-  version?: PopulationView;
+  version?: ListedPopulation;
   isChanged: boolean;
   canShare: boolean;
 }

@@ -9,7 +9,7 @@ import { formatDay } from '@/components/runs/time-words';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
-import type { PopulationView } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 
 /** Every version with who made it and what rests on it; none of them ever changes. */
 export function VersionList({
@@ -18,8 +18,8 @@ export function VersionList({
   shown,
 }: {
   collaboration: string;
-  versions: PopulationView[];
-  shown: PopulationView;
+  versions: ListedPopulation[];
+  shown: ListedPopulation;
 }) {
   const router = useRouter();
   const [problem, setProblem] = useState<string>();

@@ -49,6 +49,9 @@ export function traceIndex(
       const view: PopulationView = {
         population,
         completenessPerStar,
+        numberSeenPerStar: null,
+        rateScale: null,
+        hostMassMsun: null,
         exposure: completenessPerStar.reduce((sum, c) => sum + c, 0),
         stars: sample.stars.length,
         shareOutsideMap: weights.shareOutsideMap,

@@ -1,11 +1,11 @@
 import type { RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { type AnalysisRecipe, type RatePriorInput, ratePriorSchema } from '@/lib/schemas/analyses';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 
 /** Everything that follows a control at once, without a run. */
 export interface LiveSetting {
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   credibleLevel: number;
   detections: AnalysisRecipe['detections'];
   likelihood: AnalysisRecipe['likelihood'];
@@ -20,7 +20,7 @@ export type Query = Record<string, string | undefined>;
 
 export function settingOfRecipe(
   recipe: AnalysisRecipe,
-  definition: PopulationDefinition,
+  definition: PowerLawDefinition,
 ): LiveSetting {
   const { credibleLevel, detections, likelihood, prior } = recipe;
   return { definition, credibleLevel, detections, likelihood, prior };
@@ -45,7 +45,7 @@ const definitionFields = [
   'semiMajorAxisIndex',
 ] as const;
 
-export function isSameDefinition(one: PopulationDefinition, other: PopulationDefinition): boolean {
+export function isSameDefinition(one: PowerLawDefinition, other: PowerLawDefinition): boolean {
   return definitionFields.every(
     (field) => Math.abs(one[field] - other[field]) <= 1e-9 * Math.max(1, Math.abs(one[field])),
   );
@@ -71,8 +71,8 @@ export function settingToQuery(setting: LiveSetting, saved: LiveSetting): Record
 }
 
 export function definitionToQuery(
-  definition: PopulationDefinition,
-  saved: PopulationDefinition,
+  definition: PowerLawDefinition,
+  saved: PowerLawDefinition,
 ): Record<string, string> {
   const query: Record<string, string> = {};
   const differs = (field: (typeof definitionFields)[number]) =>
@@ -107,10 +107,7 @@ export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting 
   };
 }
 
-export function definitionFromQuery(
-  query: Query,
-  saved: PopulationDefinition,
-): PopulationDefinition {
+export function definitionFromQuery(query: Query, saved: PowerLawDefinition): PowerLawDefinition {
   const mass = readRange(query.mass);
   const axis = readRange(query.axis);
   const alpha = readIndex(query.alpha);
@@ -151,6 +148,9 @@ export function priorToText(prior: RatePriorInput): string {
       return `gamma:${prior.shape}:${prior.rate}`;
     case 'beta':
       return `beta:${prior.a}:${prior.b}`;
+    case 'tabulated':
+      // Too long for an address: whoever opens it gets the run's own prior.
+      return 'tabulated';
   }
 }
 

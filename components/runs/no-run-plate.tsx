@@ -7,7 +7,13 @@ import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-no
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { Conditions, Plate } from '@/components/ui/plate';
-import { describeLevel, describePrior } from '@/lib/inference';
+import {
+  describeLevel,
+  describePlanet,
+  describePlanets,
+  describePrior,
+  describeStars,
+} from '@/lib/inference';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import { quantityOf } from './live-setting';
 
@@ -48,15 +54,27 @@ export function NoRunPlate({ collaboration, analysis, isOnItsWay, onStarted }: N
           </p>
           <p className="statement mt-4 mb-5">
             {quantity === 'host_fraction'
-              ? 'What share of stars hosts at least one planet of'
-              : 'How many planets per 100 stars of'}{' '}
-            <b>
-              <MassRange definition={population.definition} />
-            </b>{' '}
-            at{' '}
-            <b>
-              <AxisRange definition={population.definition} />
-            </b>
+              ? `What share of ${describeStars(population.definition)} hosts`
+              : `How many per 100 ${describeStars(population.definition)} are there of`}{' '}
+            {population.definition.form === 'systems' ? (
+              <b>
+                {quantity === 'host_fraction' ? 'one ' : ''}
+                {quantity === 'host_fraction'
+                  ? describePlanet(population.definition)
+                  : describePlanets(population.definition)}
+              </b>
+            ) : (
+              <>
+                {quantity === 'host_fraction' ? 'at least one planet of' : 'planets of'}{' '}
+                <b>
+                  <MassRange definition={population.definition} />
+                </b>{' '}
+                at{' '}
+                <b>
+                  <AxisRange definition={population.definition} />
+                </b>
+              </>
+            )}
             ?
           </p>
           <Conditions

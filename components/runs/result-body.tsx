@@ -13,7 +13,7 @@ import { Plate } from '@/components/ui/plate';
 import { TextAction } from '@/components/ui/text-action';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
 import { sampleOf } from './live-sample';
@@ -184,7 +184,7 @@ function ResultPlate({
   result: RunResult;
   shown: ShownResult;
   grid: { massMjup: Float64Array; semiMajorAxisAu: Float64Array };
-  onDefinition(definition: PopulationDefinition): void;
+  onDefinition(definition: PowerLawDefinition): void;
 }) {
   const [view, setView] = useState<PosteriorView>('density');
   const { quantity, saved, isLive, isOfRun, ...numbers } = shown;
@@ -235,7 +235,7 @@ function ResultPlate({
 function useLatestDefinition(setting: LiveSetting, onSetting: (setting: LiveSetting) => void) {
   const latest = useRef({ setting, onSetting });
   latest.current = { setting, onSetting };
-  return useCallback((definition: PopulationDefinition) => {
+  return useCallback((definition: PowerLawDefinition) => {
     const { setting: present, onSetting: change } = latest.current;
     change({ ...present, definition });
   }, []);

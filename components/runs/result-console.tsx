@@ -19,7 +19,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { describeLevel, type RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { Consequences } from './consequences';
 import { type LiveSetting, tidy } from './live-setting';
@@ -44,7 +44,7 @@ export function ResultConsole(props: ResultConsoleProps) {
   const [isFull, setFull] = useState(false);
   const { definition } = setting;
   const further = isFull ? '' : 'max-md:hidden';
-  const redefine = (changes: Partial<PopulationDefinition>) =>
+  const redefine = (changes: Partial<PowerLawDefinition>) =>
     onSetting({ ...setting, definition: { ...definition, ...changes } });
   const limit = (value: number) =>
     Number.isFinite(value)

@@ -9,7 +9,11 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import {
+  isPlainPowerLaw,
+  type ListedPopulation,
+  type PowerLawDefinition,
+} from '@/lib/schemas/populations';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
 import {
   isSameSetting,
@@ -23,6 +27,7 @@ import { NoRunPlate } from './no-run-plate';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
 import { RunEnded, RunProgress } from './run-progress';
+import { StoredResult } from './stored-result';
 
 interface ResultScreenProps {
   collaboration: string;
@@ -30,7 +35,7 @@ interface ResultScreenProps {
   /** Newest finished run, with its result. */
   run: RunView | null;
   /** The population that this run used. */
-  runPopulation: PopulationView | null;
+  runPopulation: ListedPopulation | null;
   query: Query;
 }
 
@@ -42,9 +47,37 @@ export function isOnItsWay(run: RunSummary | undefined): run is RunSummary {
   return run?.job.status === 'waiting' || run?.job.status === 'running';
 }
 
-/** An analysis: its newest result, live under the controls, and what becomes of a change. */
+/** An analysis: its newest result, and where its laws allow it, live under the controls. */
 export function ResultScreen(props: ResultScreenProps) {
-  const { collaboration, query } = props;
+  const { collaboration, runPopulation } = props;
+  const { data: analysis = props.analysis, mutate } = useAnalysis(
+    collaboration,
+    props.analysis.key,
+    props.analysis,
+  );
+  const finished = analysis.runs.find(isFinished);
+  const { data: run = props.run } = useRun(collaboration, finished?.id, props.run ?? undefined);
+  const { definition } = analysis.population;
+  const isLive =
+    isPlainPowerLaw(definition) &&
+    (runPopulation === null || isPlainPowerLaw(runPopulation.definition));
+  if (isLive) return <LiveResult {...props} planned={definition} />;
+  const onChanged = () => {
+    void mutate();
+  };
+  return (
+    <StoredResult
+      collaboration={collaboration}
+      analysis={analysis}
+      run={run}
+      onChanged={onChanged}
+    />
+  );
+}
+
+/** The result under controls that it follows at once, and what becomes of a change. */
+function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) {
+  const { collaboration, query, planned } = props;
   const { data: analysis = props.analysis, mutate } = useAnalysis(
     collaboration,
     props.analysis.key,
@@ -56,8 +89,8 @@ export function ResultScreen(props: ResultScreenProps) {
   const definition = useRunDefinition(collaboration, analysis, run, props.runPopulation);
 
   const inRecipe = useMemo(
-    () => settingOfRecipe(analysis.recipe, analysis.population.definition),
-    [analysis.recipe, analysis.population.definition],
+    () => settingOfRecipe(analysis.recipe, planned),
+    [analysis.recipe, planned],
   );
   const [moved, setMoved] = useState<LiveSetting | undefined>(() => {
     const asked = settingFromQuery(query, inRecipe);
@@ -185,7 +218,7 @@ function useRunDefinition(
   collaboration: string,
   analysis: AnalysisView,
   run: RunView | null,
-  known: PopulationView | null,
+  known: ListedPopulation | null,
 ) {
   const wanted = run?.inputs?.population.id;
   const atHand = [analysis.population, known].find((population) => population?.id === wanted);
@@ -193,13 +226,11 @@ function useRunDefinition(
     collaboration,
     atHand === undefined || atHand === null ? undefined : [atHand],
   );
-  return (atHand ?? all?.find((population) => population.id === wanted))?.definition;
+  const found = (atHand ?? all?.find((population) => population.id === wanted))?.definition;
+  return found && isPlainPowerLaw(found) ? found : undefined;
 }
 
-function settingOfRun(
-  run: RunView,
-  definition: PopulationView['definition'],
-): LiveSetting | undefined {
+function settingOfRun(run: RunView, definition: PowerLawDefinition): LiveSetting | undefined {
   const recipe = analysisRecipeSchema.safeParse(run.recipe);
   return recipe.success ? settingOfRecipe(recipe.data, definition) : undefined;
 }

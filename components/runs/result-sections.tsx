@@ -6,7 +6,7 @@ import type { MapData } from '@/components/charts/map-contours';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
@@ -24,8 +24,8 @@ interface ResultSectionsProps {
   map: MapData;
   depth: DepthSeries[];
   /** The ranges as they are now, in the map's box. */
-  definition: PopulationDefinition;
-  onDefinition(definition: PopulationDefinition): void;
+  definition: PowerLawDefinition;
+  onDefinition(definition: PowerLawDefinition): void;
 }
 
 /**

@@ -3,7 +3,7 @@ import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-no
 import { Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
 import { describeLevel, describePrior, type RateQuantity } from '@/lib/inference';
 import { formatPercent, formatRate, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import { EditableRange } from './editable-range';
 import type { LimitAnswer } from './live-answer';
 import type { LiveSetting } from './live-setting';
@@ -19,7 +19,7 @@ interface ResultStatementProps {
   conditions: { name: string; value: ReactNode }[];
   /** Read out when the number has been still for a while. */
   announced: string;
-  onDefinition(definition: PopulationDefinition): void;
+  onDefinition(definition: PowerLawDefinition): void;
 }
 
 /** The sentence that a result is read as, with everything that it rests on below. */

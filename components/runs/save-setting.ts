@@ -2,7 +2,7 @@ import { copyAnalysis, updateAnalysis } from '@/components/hooks/use-analyses';
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { startRun } from '@/components/hooks/use-runs';
 import type { AnalysisView } from '@/lib/schemas/analyses';
-import type { PopulationView } from '@/lib/schemas/populations';
+import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
 import { isSameDefinition, type LiveSetting } from './live-setting';
 
 /**
@@ -19,9 +19,11 @@ export async function saveAndRun(
   setting: LiveSetting,
 ): Promise<void> {
   const { definition, ...asked } = setting;
-  const population = isSameDefinition(definition, analysis.population.definition)
-    ? analysis.population
-    : await storePopulation(collaboration, analysis.population, setting);
+  const before = analysis.population.definition;
+  const population: { id: string } =
+    isPlainPowerLaw(before) && isSameDefinition(definition, before)
+      ? analysis.population
+      : await storePopulation(collaboration, analysis.population, setting);
   await updateAnalysis(collaboration, analysis.key, {
     recipe: { ...analysis.recipe, ...asked, populationId: population.id },
   });
@@ -43,9 +45,9 @@ export async function copyAndRun(
 
 function storePopulation(
   collaboration: string,
-  population: PopulationView,
+  population: ListedPopulation,
   { definition }: LiveSetting,
-): Promise<PopulationView> {
+): Promise<{ id: string }> {
   if (population.can.saveVersion) {
     return savePopulationVersion(collaboration, population.key, { definition });
   }

@@ -7,7 +7,7 @@ import type { MapData } from '@/components/charts/map-contours';
 import { RampKey } from '@/components/charts/ramp-key';
 import { FoldSection } from '@/components/ui/fold-section';
 import { formatSignificant } from '@/lib/quantities/display';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DetectionView } from '@/lib/schemas/runs';
 
 interface SensitivitySectionProps {
@@ -15,9 +15,9 @@ interface SensitivitySectionProps {
   stars: number;
   exposure: number;
   depth: DepthSeries[];
-  definition: PopulationDefinition;
+  definition: PowerLawDefinition;
   companions: DetectionView[];
-  onDefinition(definition: PopulationDefinition): void;
+  onDefinition(definition: PowerLawDefinition): void;
 }
 
 /** Depth of search by survey over the mean map, on one axis; the range is dragged in the map. */

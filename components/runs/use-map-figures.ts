@@ -4,7 +4,7 @@ import { useMemo } from 'react';
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { MapData } from '@/components/charts/map-contours';
 import { populationWeights } from '@/lib/population';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 import { orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
@@ -15,7 +15,7 @@ export function useMapFigures(
   result: RunResult,
   inputs: RunInputs,
   sample: LiveSample | undefined,
-  definition: PopulationDefinition,
+  definition: PowerLawDefinition,
 ) {
   const map: MapData = useMemo(
     () => ({

@@ -12,7 +12,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { Tabs } from '@/components/ui/tabs';
 import { TextAction } from '@/components/ui/text-action';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
 import type { UploadView } from '@/lib/schemas/uploads';
 import { CompanionTable } from './companion-table';
@@ -32,7 +32,7 @@ interface SurveyScreenProps {
   uploads: UploadView[];
   coolingName: string | null;
   /** The newest shared population: detection probabilities are averages over it. */
-  population: PopulationDefinition | null;
+  population: BoxedDefinition | null;
 }
 
 function factsOf(survey: SurveyView): Fact[] {

@@ -13,7 +13,7 @@ import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { CompanionView, SurveyView, TargetView } from '@/lib/schemas/surveys';
 import { formatErrorPart, formatMeasured } from './measured';
 
@@ -24,7 +24,7 @@ interface TargetPanelProps {
   companions: CompanionView[];
   target: TargetView;
   /** Whose ranges are drawn on the map; null without a shared population. */
-  population: PopulationDefinition | null;
+  population: BoxedDefinition | null;
   onChanged(): void;
 }
 

@@ -8,21 +8,28 @@ import {
   type PopulationBox,
   populationBox,
   populationWarnings,
-  type SystemsPopulation,
+  type SystemsSummary,
+  summariseSystems,
 } from '@/lib/population';
 import { formatPlain, formatRange } from '@/lib/quantities/display';
 
 const MASS_UNIT = 'MJ';
 const AXIS_UNIT = 'AU';
 
+/** What words can be found for: of tabulated systems a summary is enough. */
+export type DescribedPopulation = Population | SystemsSummary;
+
+const summaryOf = (population: Extract<DescribedPopulation, { form: 'systems' }>) =>
+  'weight' in population ? summariseSystems(population) : population;
+
 const describeBox = (box: PopulationBox) =>
   `${formatRange(box.massMinMjup, box.massMaxMjup, MASS_UNIT)} at ` +
   formatRange(box.semiMajorAxisMinAu, box.semiMajorAxisMaxAu, AXIS_UNIT);
 
 /** 'planets of 2–30 MJ at 20–300 AU'; of a table its systems, of mass ratios their range. */
-export function describePlanets(population: Population): string {
+export function describePlanets(population: DescribedPopulation): string {
   if (population.form === 'systems') {
-    return `tabulated systems with planets of ${describeBox(populationBox(population))}`;
+    return `tabulated systems with planets of ${describeBox(summaryOf(population))}`;
   }
   if (population.form === 'mass-ratio') {
     const ratio = formatRange(population.massRatioMin, population.massRatioMax, '');
@@ -33,7 +40,7 @@ export function describePlanets(population: Population): string {
 }
 
 /** The same of a single one: 'planet of 2–30 MJ at 20–300 AU'. */
-export function describePlanet(population: Population): string {
+export function describePlanet(population: DescribedPopulation): string {
   const words = describePlanets(population);
   return population.form === 'systems'
     ? words.replace('tabulated systems', 'tabulated system')
@@ -41,7 +48,7 @@ export function describePlanet(population: Population): string {
 }
 
 /** Stars that a rate is quoted for: 'stars', or 'stars of 1 solar mass' where it scales. */
-export function describeStars(population: Population): string {
+export function describeStars(population: DescribedPopulation): string {
   const scaling = hostScalingOf(population);
   return scaling === null ? 'stars' : `stars of ${solarMasses(scaling.referenceMsun)}`;
 }
@@ -75,12 +82,11 @@ function describeAxis(shape: AxisShape, { symbol, min, max, unit }: AxisWords): 
   }
 }
 
-function describeSystems(population: SystemsPopulation): string {
-  const { weight, companionSystem } = population;
+function describeSystems(summary: SystemsSummary): string {
   const count = (n: number, noun: string) => `${n} ${noun}${n === 1 ? '' : 's'}`;
   return (
-    `${count(weight.length, 'tabulated system')} with ${count(companionSystem.length, 'companion')} ` +
-    `of ${describeBox(populationBox(population))}`
+    `${count(summary.systems, 'tabulated system')} with ${count(summary.companions, 'companion')} ` +
+    `of ${describeBox(summary)}`
   );
 }
 
@@ -90,8 +96,8 @@ function describeSystems(population: SystemsPopulation): string {
  * @example describePopulation(population)
  * // 'dN/dM ∝ M^−1.3 between 2 and 30 MJ, dN/da ∝ a^−0.6 between 20 and 300 AU'
  */
-export function describePopulation(population: Population): string {
-  if (population.form === 'systems') return describeSystems(population);
+export function describePopulation(population: DescribedPopulation): string {
+  if (population.form === 'systems') return describeSystems(summaryOf(population));
   const { mass, semiMajorAxis } = axisShapes(population);
   const { semiMajorAxisMinAu: near, semiMajorAxisMaxAu: far } = population;
   const ofAxis = describeAxis(semiMajorAxis, { symbol: 'a', min: near, max: far, unit: AXIS_UNIT });

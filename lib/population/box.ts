@@ -1,21 +1,26 @@
 import { massOfRatioMjup } from './host-mass';
-import type { Population, PopulationBox, SystemsPopulation } from './population';
+import type { Population, PopulationBox, SystemsPopulation, SystemsSummary } from './population';
 
-function boxOfSystems({ weight, companionSystem, massMjup, semiMajorAxisAu }: SystemsPopulation) {
-  const box: PopulationBox = {
-    massMinMjup: Number.POSITIVE_INFINITY,
-    massMaxMjup: 0,
-    semiMajorAxisMinAu: Number.POSITIVE_INFINITY,
-    semiMajorAxisMaxAu: 0,
+const least = (values: number[]) => values.reduce((a, b) => Math.min(a, b), Infinity);
+const most = (values: number[]) => values.reduce((a, b) => Math.max(a, b), 0);
+
+function boxOfSystems({ massMjup, semiMajorAxisAu }: SystemsPopulation): PopulationBox {
+  return {
+    massMinMjup: least(massMjup),
+    massMaxMjup: most(massMjup),
+    semiMajorAxisMinAu: least(semiMajorAxisAu),
+    semiMajorAxisMaxAu: most(semiMajorAxisAu),
   };
-  for (let k = 0; k < companionSystem.length; k++) {
-    if (weight[companionSystem[k]] === 0) continue;
-    box.massMinMjup = Math.min(box.massMinMjup, massMjup[k]);
-    box.massMaxMjup = Math.max(box.massMaxMjup, massMjup[k]);
-    box.semiMajorAxisMinAu = Math.min(box.semiMajorAxisMinAu, semiMajorAxisAu[k]);
-    box.semiMajorAxisMaxAu = Math.max(box.semiMajorAxisMaxAu, semiMajorAxisAu[k]);
-  }
-  return box;
+}
+
+/** Counts and box of tabulated systems, for lists and words. */
+export function summariseSystems(population: SystemsPopulation): SystemsSummary {
+  return {
+    form: 'systems',
+    systems: population.weight.length,
+    companions: population.companionSystem.length,
+    ...boxOfSystems(population),
+  };
 }
 
 /**

@@ -6,7 +6,7 @@ export type {
   TabulatedShape,
 } from './axis-shape';
 export { axisLaw, indicesOf, mapIndices } from './axis-shape';
-export { isInside, populationBox, sampleBox } from './box';
+export { isInside, populationBox, sampleBox, summariseSystems } from './box';
 export { brokenPowerLaw } from './broken-power-law';
 export { checkPopulation, populationWarnings } from './checks';
 export type { AxisConvention, IndexConvention, MassConvention } from './conventions';
@@ -42,6 +42,7 @@ export type {
   PowerLawPopulation,
   ShapedPopulation,
   SystemsPopulation,
+  SystemsSummary,
 } from './population';
 export { hostScalingOf, needsHostMass } from './population';
 export { powerLaw } from './power-law';

@@ -82,12 +82,19 @@ export type LawPopulation = PowerLawPopulation | ShapedPopulation | MassRatioPop
 /** Every form of population that the product knows; a new form joins this union and `forms.ts`. */
 export type Population = LawPopulation | SystemsPopulation;
 
+/** Tabulated systems without their companions: counts, and the box that holds all of them. */
+export interface SystemsSummary extends PopulationBox {
+  form: 'systems';
+  systems: number;
+  companions: number;
+}
+
 /** Scaling with the host's mass, or null where every star has the same rate. */
-export function hostScalingOf(population: Population): HostScaling | null {
+export function hostScalingOf(population: Population | SystemsSummary): HostScaling | null {
   return population.form === 'systems' ? null : (population.hostScaling ?? null);
 }
 
 /** Whether nothing can be said about a star of unknown mass. */
-export function needsHostMass(population: Population): boolean {
+export function needsHostMass(population: Population | SystemsSummary): boolean {
   return population.form === 'mass-ratio' || hostScalingOf(population) !== null;
 }

@@ -1,5 +1,5 @@
 import type { Fault } from '@/lib/errors';
-import type { Population } from '@/lib/population';
+import type { PopulationBox } from '@/lib/population';
 import { formatPlain } from '@/lib/quantities/display';
 
 /** How far the maps of a sample go. */
@@ -21,9 +21,9 @@ const edges = [
 ] as const;
 
 /** The first edge of a population's box that lies beyond the maps, if there is one. */
-export function findEdgeOutside(population: Population, reach: MapReach): Fault | null {
+export function findEdgeOutside(box: PopulationBox, reach: MapReach): Fault | null {
   for (const { field, column, isLower, unit } of edges) {
-    const edge = population[field];
+    const edge = box[field];
     const limit = reach[field];
     const isOutside = isLower ? edge < limit * (1 - SLACK) : edge > limit * (1 + SLACK);
     if (!isOutside) continue;

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { idSchema, levelSchema, lineSchema, moment, positiveSchema } from './common';
-import { populationSchema } from './populations';
+import { listedPopulationSchema } from './populations';
 import { runSummarySchema } from './runs';
 
 export const ratePriorSchema = z.discriminatedUnion('law', [
@@ -103,7 +103,7 @@ export const analysisSchema = z.object({
   number: z.number(),
   name: z.string(),
   recipe: analysisRecipeSchema,
-  population: populationSchema,
+  population: listedPopulationSchema,
   surveys: z.array(
     z.object({ id: idSchema, slug: z.string(), name: z.string(), position: z.number() }),
   ),

@@ -1,41 +1,40 @@
 import { z } from 'zod';
-import { idSchema, lineSchema, moment, positiveSchema } from './common';
+import { idSchema, lineSchema, moment } from './common';
+import { listedDefinitionSchema, populationDefinitionSchema } from './population-definitions';
 
-export const indexConventionSchema = z.enum(['linear', 'log']);
+export type {
+  BoxedDefinition,
+  ListedDefinition,
+  PopulationDefinition,
+  PowerLawDefinition,
+} from './population-definitions';
+export {
+  isPlainPowerLaw,
+  listedDefinitionSchema,
+  populationDefinitionSchema,
+} from './population-definitions';
 
-const powerLawFields = {
-  form: z.literal('power-law'),
-  massMinMjup: positiveSchema,
-  massMaxMjup: positiveSchema,
-  semiMajorAxisMinAu: positiveSchema,
-  semiMajorAxisMaxAu: positiveSchema,
-  massIndex: z.number().finite().min(-10).max(10),
-  semiMajorAxisIndex: z.number().finite().min(-10).max(10),
+/**
+ * What the indices of a definition are stated per: m (`linear`), ln m (`log`) or log10 m, whose
+ * index is the same.
+ */
+export const indexConventionSchema = z.enum(['linear', 'log', 'log10']);
+
+/** The same for the semi-major axis; `period`: index of dN/d ln P, `linear-period`: of dN/dP. */
+export const axisConventionSchema = z.enum(['linear', 'log', 'log10', 'period', 'linear-period']);
+
+/** Conventions of a definition's indices: named, never guessed. */
+export const statedIn = {
+  convention: indexConventionSchema,
+  /** Where the semi-major axis follows another convention than the mass. */
+  semiMajorAxisConvention: axisConventionSchema.optional(),
 };
-interface Ranges {
-  massMinMjup: number;
-  massMaxMjup: number;
-  semiMajorAxisMinAu: number;
-  semiMajorAxisMaxAu: number;
-}
-const massInOrder = (p: Ranges) => p.massMinMjup < p.massMaxMjup;
-const axisInOrder = (p: Ranges) => p.semiMajorAxisMinAu < p.semiMajorAxisMaxAu;
 
-/** As stored: indices per natural logarithm (dN/d ln m ∝ m^massIndex). */
-export const populationDefinitionSchema = z
-  .strictObject(powerLawFields)
-  .refine(massInOrder, { path: ['massMinMjup'], error: 'massMinMjup below massMaxMjup' })
-  .refine(axisInOrder, {
-    path: ['semiMajorAxisMinAu'],
-    error: 'semiMajorAxisMinAu below semiMajorAxisMaxAu',
-  });
-export type PopulationDefinition = z.infer<typeof populationDefinitionSchema>;
-
-/** As a form or a script gives it: the convention of the indices is named, never guessed. */
+/** As a form or a script gives it. */
 export const createPopulationSchema = z.strictObject({
   name: lineSchema(100),
   note: z.string().max(2000).default(''),
-  convention: indexConventionSchema,
+  ...statedIn,
   definition: populationDefinitionSchema,
   isShared: z.boolean().default(false),
   /** Number of the population of which this is a new version. */
@@ -43,14 +42,13 @@ export const createPopulationSchema = z.strictObject({
 });
 export type CreatePopulation = z.infer<typeof createPopulationSchema>;
 
-export const populationSchema = z.object({
+const facts = {
   id: idSchema,
   key: z.string(),
   number: z.number(),
   version: z.number(),
   name: z.string(),
   note: z.string(),
-  definition: populationDefinitionSchema,
   words: z.string(),
   digest: z.string(),
   isShared: z.boolean(),
@@ -58,5 +56,12 @@ export const populationSchema = z.object({
   createdAt: moment,
   usedBy: z.array(z.string()),
   can: z.object({ saveVersion: z.boolean(), share: z.boolean() }),
-});
+};
+
+/** One version with its whole definition. */
+export const populationSchema = z.object({ ...facts, definition: populationDefinitionSchema });
 export type PopulationView = z.infer<typeof populationSchema>;
+
+/** One version as lists and analyses hold it. */
+export const listedPopulationSchema = z.object({ ...facts, definition: listedDefinitionSchema });
+export type ListedPopulation = z.infer<typeof listedPopulationSchema>;

@@ -59,6 +59,8 @@ export const runInputsSchema = z.object({
       mapId: idSchema,
       mapDigest: z.string(),
       mapChecksum: z.string(),
+      /** Held where the population depends on the host's mass [M_Sun]. */
+      hostMassMsun: z.number().optional(),
     }),
   ),
   /** Confirmed companions of these stars, whether or not they lie in the ranges. */

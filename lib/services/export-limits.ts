@@ -7,7 +7,7 @@ import {
 } from '@/lib/formats';
 import { describeLevel, describePopulation, describePrior, type RatePrior } from '@/lib/inference';
 import { priorFor } from '@/lib/inference/prior-for';
-import type { Population } from '@/lib/population';
+import { type Population, type PopulationBox, populationBox } from '@/lib/population';
 import { formatSignificant } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
@@ -28,6 +28,15 @@ export interface FinishedRun {
 export const STATE = 'draft';
 
 type Quantity = RunResult['quantity'];
+
+type StatedRange = { [Edge in keyof PopulationBox]: number | null };
+
+/** The ranges of a run's population; those of masses stay empty where they differ from star to star. */
+function statedRange(population: Population): StatedRange {
+  if (population.form !== 'mass-ratio') return populationBox(population);
+  const { semiMajorAxisMinAu, semiMajorAxisMaxAu } = population;
+  return { massMinMjup: null, massMaxMjup: null, semiMajorAxisMinAu, semiMajorAxisMaxAu };
+}
 
 /** How detections enter, in words. */
 export function countingRule(run: FinishedRun, isZero: boolean, quantity: Quantity): string {
@@ -110,7 +119,8 @@ function intervalRows({ result }: FinishedRun): Row[] {
 export function writeLimitsCsv(run: FinishedRun): string {
   const rows = [...limitRows(run), ...intervalRows(run)];
   const { result, inputs, population, recipe } = run;
-  const same = (name: string, value: string | number): CsvColumn => ({
+  const range = statedRange(population);
+  const same = (name: string, value: string | number | null): CsvColumn => ({
     name,
     values: rows.map(() => value),
   });
@@ -126,10 +136,10 @@ export function writeLimitsCsv(run: FinishedRun): string {
     ),
     same('population', `${inputs.population.key} version ${inputs.population.version}`),
     each('rate_prior', ({ quantity }) => priorText(run, quantity)),
-    same('mass_min', population.massMinMjup),
-    same('mass_max', population.massMaxMjup),
-    same('semi_major_axis_min', population.semiMajorAxisMinAu),
-    same('semi_major_axis_max', population.semiMajorAxisMaxAu),
+    same('mass_min', range.massMinMjup),
+    same('mass_max', range.massMaxMjup),
+    same('semi_major_axis_min', range.semiMajorAxisMinAu),
+    same('semi_major_axis_max', range.semiMajorAxisMaxAu),
     each('quantity', ({ quantity }) => quantity),
     each('interval', ({ interval }) => interval),
     each('credible_level', ({ level }) => level),
@@ -154,8 +164,9 @@ export function writeLimitsCsv(run: FinishedRun): string {
 /** Posterior of the run's quantity on a grid; what it rests on stands in every row. */
 export function writePosteriorCsv(run: FinishedRun): string {
   const { result, inputs, population } = run;
+  const range = statedRange(population);
   const { value, density, cumulative } = result.answer.curve;
-  const same = (name: string, text: string | number): CsvColumn => ({
+  const same = (name: string, text: string | number | null): CsvColumn => ({
     name,
     values: value.map(() => text),
   });
@@ -167,10 +178,10 @@ export function writePosteriorCsv(run: FinishedRun): string {
     same('credible_level', result.credibleLevel),
     same('upper_limit', result.answer.limit),
     same('rate_prior', priorText(run, result.quantity)),
-    same('mass_min', population.massMinMjup),
-    same('mass_max', population.massMaxMjup),
-    same('semi_major_axis_min', population.semiMajorAxisMinAu),
-    same('semi_major_axis_max', population.semiMajorAxisMaxAu),
+    same('mass_min', range.massMinMjup),
+    same('mass_max', range.massMaxMjup),
+    same('semi_major_axis_min', range.semiMajorAxisMinAu),
+    same('semi_major_axis_max', range.semiMajorAxisMaxAu),
     same('population', `${inputs.population.key} version ${inputs.population.version}`),
     same('n_targets', result.stars),
     same('n_companions', countedDetections(run, false, result.quantity)),

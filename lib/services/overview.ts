@@ -1,6 +1,7 @@
 import { Op, QueryTypes } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { may } from '@/lib/access/permissions';
+import { JUPITER_MASSES_PER_SUN } from '@/lib/quantities/constants';
 import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
 import type { JobView } from '@/lib/schemas/jobs';
 import type { Overview } from '@/lib/schemas/overview';
@@ -86,15 +87,20 @@ interface Candidates {
 /** Candidates that nobody has decided on, inside the ranges of the lead analysis. */
 async function undecidedCandidates(actor: Actor, lead: AnalysisView | null): Promise<Waiting> {
   if (!lead) return [];
-  const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } =
-    lead.population.definition;
+  const { definition } = lead.population;
+  const isPerHost = definition.form === 'mass-ratio';
+  const [massMinMjup, massMaxMjup] = isPerHost
+    ? [definition.massRatioMin, definition.massRatioMax].map((q) => q * JUPITER_MASSES_PER_SUN)
+    : [definition.massMinMjup, definition.massMaxMjup];
+  const { semiMajorAxisMinAu, semiMajorAxisMaxAu } = definition;
   const recipe: AnalysisRecipe = lead.recipe;
   const rows = await database().query<Candidates>(
     `select s.name as survey, s.slug, array_agg(t.name || ' ' || c.name order by t.name, c.name) as names
      from companion c join target t on t.id = c.target_id join survey s on s.id = t.survey_id
      where c.collaboration_id = $1 and t.survey_id = any($2::uuid[]) and t.left_out_reason is null
        and c.status in ('candidate', 'ambiguous')
-       and c.mass_mjup between $3 and $4 and c.semi_major_axis_au between $5 and $6
+       and c.mass_mjup / (case when $7 then t.host_mass_msun else 1 end) between $3 and $4
+       and c.semi_major_axis_au between $5 and $6
      group by s.id order by s.position`,
     {
       bind: [
@@ -104,6 +110,7 @@ async function undecidedCandidates(actor: Actor, lead: AnalysisView | null): Pro
         massMaxMjup,
         semiMajorAxisMinAu,
         semiMajorAxisMaxAu,
+        isPerHost,
       ],
       type: QueryTypes.SELECT,
     },

@@ -1,12 +1,20 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
-import { NotFound } from '@/lib/errors';
+import { InputError, NotFound } from '@/lib/errors';
 import { describePopulation } from '@/lib/inference';
-import { type IndexConvention, type Population, toLogIndex } from '@/lib/population';
+import {
+  checkPopulation,
+  type Population,
+  type StatedConventions,
+  type SystemsSummary,
+  toStoredPopulation,
+} from '@/lib/population';
 import type { CreateVersion } from '@/lib/schemas/population-versions';
 import {
   type CreatePopulation,
+  type ListedPopulation,
+  listedPopulationSchema,
   type PopulationDefinition,
   type PopulationView,
   populationSchema,
@@ -16,8 +24,6 @@ import { digestOf } from '@/models/digest';
 import { recordAudit } from './audit';
 
 const KEY = /^P-([1-9][0-9]{0,8})$/;
-/** Digits kept of a converted index: the convention it was given in must not show in the digest. */
-const INDEX_DIGITS = 12;
 
 function numberOf(key: string): number {
   const number = KEY.exec(key)?.[1];
@@ -25,27 +31,34 @@ function numberOf(key: string): number {
   return Number(number);
 }
 
-/** The definition with its indices per natural logarithm, as it is stored. */
+/** The definition as it is stored: indices per natural logarithm, and refused if it cannot be used. */
 export function toStored(
   definition: PopulationDefinition,
-  convention: IndexConvention,
+  conventions: StatedConventions,
 ): PopulationDefinition {
-  const stored = (index: number) =>
-    convention === 'log' ? index : Number(toLogIndex(index, convention).toPrecision(INDEX_DIGITS));
-  return {
-    ...definition,
-    massIndex: stored(definition.massIndex),
-    semiMajorAxisIndex: stored(definition.semiMajorAxisIndex),
-  };
+  const stored = toStoredPopulation(definition, conventions);
+  try {
+    checkPopulation(stored);
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    throw new InputError({ code: 'population', item: 'definition', message: error.message });
+  }
+  return stored;
 }
 
-interface Fields {
+/** What a request says of its indices: the axis follows the mass where nothing else is named. */
+const conventionsOf = (input: Pick<CreateVersion, 'convention' | 'semiMajorAxisConvention'>) => ({
+  mass: input.convention,
+  semiMajorAxis: input.semiMajorAxisConvention ?? input.convention,
+});
+
+interface Fields<Definition = Population> {
   id: string;
   number: number;
   version: number;
   name: string;
   note: string;
-  definition: Population;
+  definition: Definition;
   digest: string;
   isShared: boolean;
   createdBy: string | null;
@@ -60,8 +73,15 @@ const standing = (actor: Actor, row: Pick<Fields, 'beganById' | 'isShared'>) => 
   isOwn: row.beganById === actor.personId && !row.isShared,
 });
 
-function toView(actor: Actor, row: Fields): PopulationView {
-  return populationSchema.parse({
+type Listed = Fields<Population | SystemsSummary>;
+
+const toView = (actor: Actor, row: Fields): PopulationView =>
+  populationSchema.parse(viewOf(actor, row));
+const toListed = (actor: Actor, row: Listed): ListedPopulation =>
+  listedPopulationSchema.parse(viewOf(actor, row));
+
+function viewOf(actor: Actor, row: Listed) {
+  return {
     id: row.id,
     key: `P-${row.number}`,
     number: row.number,
@@ -79,16 +99,35 @@ function toView(actor: Actor, row: Fields): PopulationView {
       saveVersion: row.isLatest && may(actor, 'save-population', standing(actor, row)),
       share: !row.isShared && may(actor, 'share-population'),
     },
-  });
+  };
 }
 
-async function readPopulations(
+const extreme = (which: 'min' | 'max', column: string) =>
+  `(select ${which}(x::float8) from jsonb_array_elements_text(p.definition->'${column}') x)`;
+
+/** Of tabulated systems counts and box, as `summariseSystems` gives them; all others whole. */
+const LISTED_DEFINITION = `case when p.definition->>'form' = 'systems' then jsonb_build_object(
+  'form', 'systems',
+  'systems', jsonb_array_length(p.definition->'weight'),
+  'companions', jsonb_array_length(p.definition->'companionSystem'),
+  'massMinMjup', ${extreme('min', 'massMjup')},
+  'massMaxMjup', ${extreme('max', 'massMjup')},
+  'semiMajorAxisMinAu', ${extreme('min', 'semiMajorAxisAu')},
+  'semiMajorAxisMaxAu', ${extreme('max', 'semiMajorAxisAu')}) else p.definition end`;
+
+interface Wanted {
+  number?: number;
+  ids?: string[];
+}
+
+async function readPopulations<Row extends Listed>(
   actor: Actor,
-  number: number | null,
+  definition: string,
+  { number, ids }: Wanted,
   transaction?: Transaction,
-): Promise<Fields[]> {
-  return database().query<Fields>(
-    `select p.id, p.number, p.version, p.name, p.note, p.definition, p.digest,
+): Promise<Row[]> {
+  return database().query<Row>(
+    `select p.id, p.number, p.version, p.name, p.note, ${definition} as definition, p.digest,
             p.is_shared as "isShared", w.name as "createdBy", p.created_at as "createdAt",
             first_value(p.created_by) over versions as "beganById",
             p.version = max(p.version) over (partition by p.number) as "isLatest",
@@ -97,17 +136,23 @@ async function readPopulations(
                          and a.recipe->>'populationId' = p.id::text), '{}') as "usedBy"
        from population p left join person w on w.id = p.created_by
       where p.collaboration_id = $1 and ($2::int is null or p.number = $2)
+        and ($3::uuid[] is null or p.number in (select number from population
+              where collaboration_id = $1 and id = any($3::uuid[])))
      window versions as (partition by p.number order by p.version)
       order by p.number desc, p.version desc`,
-    { bind: [actor.collaborationId, number], type: QueryTypes.SELECT, transaction },
+    {
+      bind: [actor.collaborationId, number ?? null, ids ?? null],
+      type: QueryTypes.SELECT,
+      transaction,
+    },
   );
 }
 
 /** Every version in the collaboration, newest population and version first. */
-export async function listPopulations(actor: Actor): Promise<{ populations: PopulationView[] }> {
+export async function listPopulations(actor: Actor): Promise<{ populations: ListedPopulation[] }> {
   demand(actor, 'read');
-  const rows = await readPopulations(actor, null);
-  return { populations: rows.map((row) => toView(actor, row)) };
+  const rows = await readPopulations<Listed>(actor, LISTED_DEFINITION, {});
+  return { populations: rows.map((row) => toListed(actor, row)) };
 }
 
 async function findVersion(
@@ -116,10 +161,14 @@ async function findVersion(
   version: number | undefined,
   transaction?: Transaction,
 ): Promise<Fields> {
-  const rows = await readPopulations(actor, numberOf(key), transaction);
+  const wanted = { number: numberOf(key) };
+  const rows = await readPopulations<Listed>(actor, LISTED_DEFINITION, wanted, transaction);
   const row = version === undefined ? rows[0] : rows.find((one) => one.version === version);
   if (!row) throw new NotFound('population');
-  return row;
+  const where = { id: row.id, collaborationId: actor.collaborationId };
+  const whole = await PopulationRow.findOne({ where, transaction });
+  if (!whole) throw new NotFound('population');
+  return { ...row, definition: whole.definition };
 }
 
 /** The newest version of a population, or the one that is asked for. */
@@ -145,7 +194,8 @@ interface Insert {
   version: number;
   name: string;
   note: string;
-  convention: IndexConvention;
+  convention: CreateVersion['convention'];
+  semiMajorAxisConvention?: CreateVersion['semiMajorAxisConvention'];
   definition: PopulationDefinition;
   isShared: boolean;
 }
@@ -156,7 +206,7 @@ async function insert(
   transaction: Transaction,
 ): Promise<PopulationView> {
   const { number, version, name, note, isShared } = input;
-  const definition = toStored(input.definition, input.convention);
+  const definition = toStored(input.definition, conventionsOf(input));
   const digest = digestOf(definition);
   const { collaborationId } = actor;
   const createdBy = actor.personId;
@@ -241,10 +291,15 @@ export async function findPopulationsById(
   actor: Actor,
   ids: readonly string[],
   transaction?: Transaction,
-): Promise<Map<string, PopulationView>> {
+): Promise<Map<string, ListedPopulation>> {
   const wanted = new Set(ids);
-  const rows = await readPopulations(actor, null, transaction);
+  const rows = await readPopulations<Listed>(
+    actor,
+    LISTED_DEFINITION,
+    { ids: [...wanted] },
+    transaction,
+  );
   return new Map(
-    rows.filter((row) => wanted.has(row.id)).map((row) => [row.id, toView(actor, row)]),
+    rows.filter((row) => wanted.has(row.id)).map((row) => [row.id, toListed(actor, row)]),
   );
 }

@@ -2,6 +2,7 @@ import { QueryTypes, type Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { InputError, NotFound, TooMany } from '@/lib/errors';
+import { populationBox } from '@/lib/population';
 import { enqueueRun } from '@/lib/queue/enqueue';
 import { findEdgeOutside, findEmptySelection, type MapReach } from '@/lib/queue/preconditions';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
@@ -122,7 +123,9 @@ async function refuseUnanswerable(
   });
   if (!population) throw new NotFound('population');
   if (recipe.zeroOutsideMaps || selection.massMinMjup === null) return;
-  const outside = findEdgeOutside(population.definition, selection);
+  // The masses of a mass ratio are each star's own: the run itself finds out whether they fit.
+  if (population.definition.form === 'mass-ratio') return;
+  const outside = findEdgeOutside(populationBox(population.definition), selection);
   if (outside) throw new InputError(outside);
 }
 

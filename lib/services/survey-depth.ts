@@ -1,4 +1,9 @@
-import { type Population, populationWeights } from '@/lib/population';
+import { literal, Op } from 'sequelize';
+import {
+  type PowerLawPopulation,
+  populationWeights,
+  type ShapedPopulation,
+} from '@/lib/population';
 import { type MapGrid, regridNodes } from '@/lib/sensitivity';
 import { CompletenessMapRow, PopulationRow } from '@/models';
 import { unpackMap } from '@/models/map-values';
@@ -15,7 +20,7 @@ const CACHE_SIZE = 6000;
 const cache = new Map<string, MapSummary>();
 
 /** Shape for surveys of a collaboration that has shared no population yet: flat in both logarithms. */
-const FLAT: Population = {
+const FLAT: PowerLawPopulation = {
   form: 'power-law',
   massMinMjup: 2,
   massMaxMjup: 30,
@@ -26,19 +31,31 @@ const FLAT: Population = {
 };
 
 export interface Yardstick {
-  population: Population;
+  population: PowerLawPopulation | ShapedPopulation;
   key: string;
   isShared: boolean;
 }
 
-/** The population through which lists show sensitivity: the newest that is shared. */
+/**
+ * The population through which lists show sensitivity: the newest that is shared and has one box
+ * for all stars. Mass ratios depend on each star's mass, tabulated systems on whole systems.
+ */
 export async function currentYardstick(collaborationId: string): Promise<Yardstick> {
   const row = await PopulationRow.findOne({
-    where: { collaborationId, isShared: true },
+    where: {
+      collaborationId,
+      isShared: true,
+      [Op.and]: literal(`definition->>'form' in ('power-law', 'shaped')`),
+    },
     order: [['createdAt', 'DESC']],
   });
-  return row
-    ? { population: row.definition, key: row.digest, isShared: true }
+  const isBoxed = row?.definition.form === 'power-law' || row?.definition.form === 'shaped';
+  return row && isBoxed
+    ? {
+        population: row.definition as PowerLawPopulation | ShapedPopulation,
+        key: row.digest,
+        isShared: true,
+      }
     : { population: FLAT, key: 'flat', isShared: false };
 }
 

@@ -1,6 +1,6 @@
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 
-export const POPULATION: PopulationDefinition = {
+export const POPULATION: PowerLawDefinition = {
   form: 'power-law',
   massMinMjup: 3,
   massMaxMjup: 40,

@@ -5,17 +5,19 @@ import {
   isSetByPrior,
   type Likelihood,
   limitAtLowerFloor,
+  type PopulationView,
   type PosteriorCurve,
   posteriorCurve,
   type RatePosterior,
   type RatePrior,
   ratePosterior,
+  seenBy,
   TABLE_LEVELS,
   upperLimit,
   viewPopulation,
 } from '@/lib/inference';
 import { priorFor } from '@/lib/inference/prior-for';
-import { type Population, populationWeights } from '@/lib/population';
+import { marginalWeights, type Population } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
 
 export interface AnswerRunInput {
@@ -23,6 +25,8 @@ export interface AnswerRunInput {
   maps: Uint16Array;
   grid: MapGrid;
   population: Population;
+  /** Shape [star] [M_Sun], where the population depends on it. */
+  hostMassMsun?: Float64Array;
   likelihood: Likelihood;
   prior: RatePrior;
   credibleLevel: number;
@@ -54,11 +58,14 @@ export interface LevelRow {
 }
 
 export interface AnswerRunOutput {
+  /** Of tabulated systems the probability that any companion is seen, or their mean number. */
   completenessPerStar: number[];
   exposure: number;
   answer: RateSummary;
   zero: RateSummary;
   atTenthOfFloor: number | null;
+  /** Where the prior of the fraction ends so that no star's own exceeds 1; null: nowhere. */
+  cutAt: number | null;
   levels: LevelRow[];
   /** Averages over the stars, rows of mass. */
   meanMap: number[][];
@@ -69,11 +76,12 @@ export interface AnswerRunOutput {
 /** Everything that follows from the maps of a run and its question; sums run in the stars' order. */
 export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
   const { maps, grid, population, likelihood, prior, credibleLevel: level } = input;
-  const view = viewPopulation(maps, grid, population);
-  const completeness = view.completenessPerStar as Float64Array;
+  const view = viewPopulation(maps, grid, population, input.hostMassMsun);
+  const { completeness, exposure } = seenPerStar(view, likelihood);
+  const scaled = view.rateScale === null ? {} : { rateScale: view.rateScale };
   refuseUnseen(input, completeness);
   const detectedStars = input.detections.map(({ star }) => star);
-  const question = { likelihood, prior, completeness };
+  const question = { likelihood, prior, completeness, ...scaled };
   const posterior = ratePosterior({ ...question, detectedStars });
   const none = ratePosterior({ ...question, detectedStars: [] });
   const ranges = [displayRange(posterior), displayRange(none)];
@@ -83,14 +91,22 @@ export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
   ];
   return {
     completenessPerStar: [...completeness],
-    exposure: view.exposure,
+    exposure,
     answer: summarise(posterior, level, range),
     zero: summarise(none, level, range),
     atTenthOfFloor: limitAtLowerFloor({ ...question, detectedStars }, level),
-    levels: tabulateLevels(input, completeness, detectedStars),
+    cutAt: posterior.cutAt,
+    levels: tabulateLevels(input, view, detectedStars),
     meanMap: averageMaps(input),
     depth: stackDepth(input),
   };
+}
+
+/** What a likelihood works with: of stacked maps it is always known star by star. */
+function seenPerStar(view: PopulationView, likelihood: Likelihood) {
+  const { completeness, exposure } = seenBy(view, likelihood);
+  if (completeness === null) throw new RangeError("a run needs each star's own map");
+  return { completeness, exposure };
 }
 
 function refuseUnseen({ detections }: AnswerRunInput, completeness: Float64Array): void {
@@ -137,14 +153,22 @@ function drawable(curve: PosteriorCurve, posterior: RatePosterior): RateSummary[
 
 function tabulateLevels(
   input: AnswerRunInput,
-  completeness: Float64Array,
+  view: PopulationView,
   detectedStars: number[],
 ): LevelRow[] {
   const { prior, credibleLevel } = input;
   const posteriorOf = (likelihood: Likelihood, detected: number[]) => {
     const own = priorFor(prior, likelihood);
     if (own === null) return null;
-    return ratePosterior({ likelihood, prior: own, completeness, detectedStars: detected });
+    const { completeness } = seenPerStar(view, likelihood);
+    const scaled = view.rateScale === null ? {} : { rateScale: view.rateScale };
+    return ratePosterior({
+      likelihood,
+      prior: own,
+      completeness,
+      detectedStars: detected,
+      ...scaled,
+    });
   };
   const fraction = posteriorOf('host-fraction', detectedStars);
   const fractionZero = posteriorOf('host-fraction', []);
@@ -178,22 +202,36 @@ function averageMaps({ maps, grid }: AnswerRunInput): number[][] {
 
 /** A star that several surveys list is shared out among them, so that the stack counts it once. */
 function stackDepth(input: AnswerRunInput): number[][] {
-  const { maps, grid, population, surveysOfStar, surveys } = input;
-  const weights = populationWeights(grid, population);
+  const { maps, grid, population, hostMassMsun, surveysOfStar, surveys } = input;
+  const perHost = population.form === 'mass-ratio' ? hostMassMsun : undefined;
+  const massesFor = massWeights(grid, population);
   const rows = grid.massMjup.length;
   const columns = grid.semiMajorAxisAu.length;
-  let whole = 0;
-  for (const weight of weights.mass) whole += weight;
   const depth = Array.from({ length: surveys }, () => new Array<number>(columns).fill(0));
   surveysOfStar.forEach((own, star) => {
+    const { mass, whole } = massesFor(perHost?.[star]);
+    if (whole === 0) return;
     for (let column = 0; column < columns; column++) {
       let seen = 0;
       for (let row = 0; row < rows; row++) {
-        seen += weights.mass[row] * maps[(star * rows + row) * columns + column];
+        seen += mass[row] * maps[(star * rows + row) * columns + column];
       }
       const share = seen / (65_535 * whole * own.length);
       for (const survey of own) depth[survey][column] += share;
     }
   });
   return depth;
+}
+
+/** How the population's masses lie on the grid, for each host mass once. */
+function massWeights(grid: MapGrid, population: Population) {
+  const known = new Map<number | undefined, { mass: Float64Array; whole: number }>();
+  return (host: number | undefined) => {
+    const found = known.get(host);
+    if (found) return found;
+    const { mass } = marginalWeights(grid, population, host);
+    const made = { mass, whole: mass.reduce((a, b) => a + b, 0) };
+    known.set(host, made);
+    return made;
+  };
 }

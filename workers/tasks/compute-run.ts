@@ -1,5 +1,6 @@
 import { Transaction } from 'sequelize';
 import { InputError, NotFound } from '@/lib/errors';
+import { type Population, sampleBox } from '@/lib/population';
 import { complete, hold, reportProgress } from '@/lib/queue/attempt';
 import { findEdgeOutside } from '@/lib/queue/preconditions';
 import { select } from '@/lib/queue/statement';
@@ -11,6 +12,7 @@ import { digestOf } from '@/models/digest';
 import type { AnswerRunInput, AnswerRunOutput } from '../compute/answer-run';
 import type { Work } from '../perform';
 import { type MergedCompanions, mergeCompanions } from './run-companions';
+import { hostMassesFor } from './run-hosts';
 import { combineMaps, commonGrid } from './run-maps';
 import { assembleResult, countCompanions } from './run-result';
 import { collectSample, type Sample } from './run-sample';
@@ -22,6 +24,8 @@ interface Collected {
   run: RunRow;
   population: PopulationRow;
   sample: Sample;
+  /** Shape [star] [M_Sun], where the population depends on it. */
+  hostMassMsun: Float64Array | undefined;
   companions: MergedCompanions;
 }
 
@@ -37,7 +41,7 @@ export async function performComputeRun(work: Work): Promise<void> {
   };
   await enter('collect', 1);
   const collected = await collect(work);
-  const { run, population, sample, companions } = collected;
+  const { run, population, sample, hostMassMsun, companions } = collected;
   const { recipe } = run;
   const grid = commonGrid(sample);
   const digests = await combineMaps(work, sample, recipe.combination, grid, (done, total) =>
@@ -45,8 +49,15 @@ export async function performComputeRun(work: Work): Promise<void> {
   );
   await enter('integrate', sample.stars.length);
   const { definition } = population;
-  const stack = await stackMaps(attempt.collaborationId, sample.stars, digests, grid, definition);
-  refuseOutside(recipe, population, stack);
+  const stack = await stackMaps(
+    attempt.collaborationId,
+    sample.stars,
+    digests,
+    grid,
+    definition,
+    hostMassMsun,
+  );
+  refuseOutside(recipe, definition, stack, hostMassMsun);
   await enter('posterior', 1);
   const inputs = describeInputs(collected, stack, grid);
   const counted = countCompanions(companions.confirmed, inputs, definition, recipe);
@@ -56,6 +67,7 @@ export async function performComputeRun(work: Work): Promise<void> {
       maps: stack.maps,
       grid,
       population: definition,
+      ...(hostMassMsun && { hostMassMsun }),
       likelihood: recipe.likelihood,
       prior: recipe.prior,
       credibleLevel: recipe.credibleLevel,
@@ -89,13 +101,20 @@ function collect({ attempt }: Work): Promise<Collected> {
     });
     if (!population) throw new NotFound('population');
     const sample = await collectSample(collaborationId, run.recipe.surveyIds, transaction);
+    const hostMassMsun = hostMassesFor(population.definition, sample.stars);
     const companions = await mergeCompanions(sample.stars, population.definition, transaction);
-    return { run, population, sample, companions };
+    return { run, population, sample, hostMassMsun, companions };
   });
 }
 
-function refuseOutside(recipe: AnalysisRecipe, population: PopulationRow, stack: MapStack): void {
-  const fault = findEdgeOutside(population.definition, stack.reach);
+function refuseOutside(
+  recipe: AnalysisRecipe,
+  population: Population,
+  stack: MapStack,
+  hostMassMsun: Float64Array | undefined,
+): void {
+  const box = sampleBox(population, hostMassMsun ?? new Float64Array());
+  const fault = box && findEdgeOutside(box, stack.reach);
   if (fault && (!recipe.zeroOutsideMaps || stack.shareOutsideMaps >= 1)) {
     throw new InputError({ code: fault.code, message: fault.message });
   }

@@ -71,7 +71,10 @@ export async function mergeCompanions(
           name: `${star.name} ${group[0].name}`,
           star: star.name,
           status: status ?? group[0].status,
-          insideRanges: m === null || a === null ? null : isInside(population, m, a),
+          insideRanges:
+            m === null || a === null
+              ? null
+              : isInside(population, m, a, star.hostMassMsun ?? undefined),
         });
       }
     }

@@ -21,8 +21,9 @@ export function countCompanions(
   population: Population,
   recipe: AnalysisRecipe,
 ): CountedCompanions {
-  const inside = confirmed.filter((companion) =>
-    isInside(population, companion.massMjup, companion.semiMajorAxisAu),
+  const hostOf = new Map(inputs.stars.map(({ starId, hostMassMsun }) => [starId, hostMassMsun]));
+  const inside = confirmed.filter(({ massMjup, semiMajorAxisAu, starId }) =>
+    isInside(population, massMjup, semiMajorAxisAu, hostOf.get(starId)),
   );
   const outside = confirmed.filter((companion) => !inside.includes(companion));
   const counted = recipe.detections === 'none' ? [] : inside;
@@ -78,6 +79,7 @@ export function assembleResult(parts: Parts): RunResult {
       surveys: inputs.surveys.map(({ id }, i) => ({ id, stars: output.depth[i] })),
     },
     starTable: tabulateStars(parts),
+    priorCutAt: output.cutAt,
     statement: stateResult(parts),
   };
 }
@@ -119,6 +121,7 @@ function stateResult({ inputs, recipe, population, stack, counted, output }: Par
     shareOutside: Math.max(stack.shareOutsideMaps, 0),
     constrained: answer.isConstrained,
     setByPrior: answer.isSetByPrior,
+    cutAt: output.cutAt,
     ...(likelihoodCount > 0 && {
       interval: {
         kind: 'equal-tailed' as const,

@@ -23,6 +23,8 @@ export interface Entry {
 export interface SampleStar {
   starId: string;
   name: string;
+  /** From the first survey, in their order, that gives one [M_Sun]. */
+  hostMassMsun: number | null;
   /** By the surveys' order; at least one. */
   entries: Entry[];
 }
@@ -130,8 +132,13 @@ export async function collectSample(
 
 function addEntry(stars: Map<string, SampleStar>, star: StarRow, entry: Entry): void {
   const known = stars.get(star.id);
-  if (known) known.entries.push(entry);
-  else stars.set(star.id, { starId: star.id, name: star.name, entries: [entry] });
+  const { hostMassMsun } = entry.target;
+  if (known) {
+    known.entries.push(entry);
+    known.hostMassMsun ??= hostMassMsun;
+    return;
+  }
+  stars.set(star.id, { starId: star.id, name: star.name, hostMassMsun, entries: [entry] });
 }
 
 function refuseMissingMaps(names: string[]): void {

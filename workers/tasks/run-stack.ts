@@ -1,4 +1,4 @@
-import { type Population, populationWeights } from '@/lib/population';
+import { marginalWeights, type Population, type PopulationWeights } from '@/lib/population';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
 import { CompletenessMapRow } from '@/models';
@@ -28,6 +28,8 @@ export interface MapStack {
 /**
  * Reads the stars' maps and lays them on the run's grid, encoded as the page will get them: worker
  * and page then start from the same numbers.
+ *
+ * @param hostMassMsun shape [star] [M_Sun], where the population depends on it
  */
 export async function stackMaps(
   collaborationId: string,
@@ -35,6 +37,7 @@ export async function stackMaps(
   digests: MapDigests,
   grid: MapGrid,
   population: Population,
+  hostMassMsun: Float64Array | undefined,
 ): Promise<MapStack> {
   const size = grid.massMjup.length * grid.semiMajorAxisAu.length;
   const maps = new Uint16Array(sampleStars.length * size);
@@ -55,7 +58,8 @@ export async function stackMaps(
       if (!row) throw new Error(`the map of ${star.name} is not stored`);
       maps.set(valuesOnGrid(row, grid), (start + i) * size);
       narrow(reach, row);
-      share.count(row);
+      const host = hostMassMsun?.[start + i];
+      share.count(row, population.form === 'mass-ratio' ? host : undefined);
       stars.push({
         starId: star.starId,
         name: star.name,
@@ -63,6 +67,7 @@ export async function stackMaps(
         mapId: row.id,
         mapDigest: row.digest,
         mapChecksum: row.checksum,
+        ...(host !== undefined && { hostMassMsun: host }),
       });
     });
   }
@@ -86,39 +91,33 @@ function narrow(reach: MapStack['reach'], row: CompletenessMapRow): void {
   reach.semiMajorAxisMaxAu = Math.min(reach.semiMajorAxisMaxAu, last(row.semiMajorAxisAu));
 }
 
+/** Weights per axes and host mass: most maps of a run share theirs. */
 function shareCounter(population: Population, grid: MapGrid) {
-  const known = new Map<string, ReturnType<typeof weightsOn>>();
-  const weightsOn = (axes: MapGrid) => {
-    try {
-      return populationWeights(axes, population);
-    } catch (error) {
-      if (error instanceof RangeError) return null;
-      throw error;
-    }
+  const known = new Map<string, PopulationWeights>();
+  const weightsOn = (massMjup: ArrayLike<number>, axisAu: ArrayLike<number>, host?: number) => {
+    const key = JSON.stringify([host, Array.from(massMjup), Array.from(axisAu)]);
+    const weights =
+      known.get(key) ??
+      marginalWeights(
+        { massMjup: Float64Array.from(massMjup), semiMajorAxisAu: Float64Array.from(axisAu) },
+        population,
+        host,
+      );
+    known.set(key, weights);
+    return weights;
   };
-  const common = weightsOn(grid)?.shareOutsideMap ?? 1;
   let outside = 0;
   let flagged = 0;
   let stars = 0;
   return {
-    count(row: CompletenessMapRow): void {
-      const key = JSON.stringify([row.massMjup, row.semiMajorAxisAu]);
-      if (!known.has(key)) {
-        known.set(
-          key,
-          weightsOn({
-            massMjup: Float64Array.from(row.massMjup),
-            semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
-          }),
-        );
-      }
-      const weights = known.get(key);
+    count(row: CompletenessMapRow, host: number | undefined): void {
+      const common = weightsOn(grid.massMjup, grid.semiMajorAxisAu, host);
+      const own = weightsOn(row.massMjup, row.semiMajorAxisAu, host);
       stars++;
-      outside += Math.max(common, weights?.shareOutsideMap ?? 1);
-      if (!weights) return;
+      outside += Math.max(common.shareOutsideMap, own.shareOutsideMap);
       const masses = new Set(flaggedMasses(row));
       row.massMjup.forEach((mass, i) => {
-        if (masses.has(mass)) flagged += weights.mass[i];
+        if (masses.has(mass)) flagged += own.mass[i];
       });
     },
     means: () => ({ shareOutsideMaps: outside / stars, shareFlaggedCooling: flagged / stars }),

@@ -1,8 +1,8 @@
 import type { LiveSample } from '@/components/runs/live-sample';
-import type { PopulationDefinition } from '@/lib/schemas/populations';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 
-export const definition: PopulationDefinition = {
+export const definition: PowerLawDefinition = {
   form: 'power-law',
   massMinMjup: 2,
   massMaxMjup: 30,

@@ -8,6 +8,7 @@ import {
   type RateQuantity,
   type StatementInputs,
 } from '@/lib/inference';
+import type { PowerLawPopulation } from '@/lib/population';
 
 const plain = (text: string) => text.replaceAll('\u2009', ' ').replaceAll('\u2212', '-');
 
@@ -142,7 +143,9 @@ describe('describePrior', () => {
 describe('describePopulation and describeLevel', () => {
   it('give linear indices by name, and levels without needless zeros', () => {
     const { population } = buildInputs();
-    expect(plain(describePopulation({ ...population, massIndex: 0 }))).toContain('dN/dM ∝ M^-1 ');
+    expect(population.form).toBe('power-law');
+    const flat = { ...(population as PowerLawPopulation), massIndex: 0 };
+    expect(plain(describePopulation(flat))).toContain('dN/dM ∝ M^-1 ');
     expect(plain(describeLevel(0.9))).toBe('90 %');
     expect(plain(describeLevel(0.9999))).toBe('99.99 %');
   });

@@ -6,7 +6,7 @@ import { logSpacedAxis } from '@/lib/numerics/grid';
 import {
   meanCompleteness,
   meanCompletenessOfStack,
-  type Population,
+  type PowerLawPopulation,
   populationWeights,
 } from '@/lib/population';
 
@@ -15,7 +15,7 @@ const grid = {
   semiMajorAxisAu: logSpacedAxis(1, 1000, 24),
 };
 
-function buildPopulation(overrides: Partial<Population> = {}): Population {
+function buildPopulation(overrides: Partial<PowerLawPopulation> = {}): PowerLawPopulation {
   return {
     form: 'power-law',
     massMinMjup: 2,
