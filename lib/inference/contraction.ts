@@ -33,7 +33,7 @@ function requireWeights(weights: readonly Float64Array[], length: number, axis: 
   }
 }
 
-/** Sums of a row with four sets of weights at once: one reading of the row serves all four. */
+/** Sums of a row with six sets of weights at once: one reading of the row serves all six. */
 function multiplyRow(
   row: Float64Array,
   weights: Float64Array,
@@ -43,20 +43,34 @@ function multiplyRow(
 ): void {
   const n = row.length;
   let set = 0;
-  for (; set + 4 <= sets; set += 4) {
-    const base = set * n;
-    let [s0, s1, s2, s3] = [0, 0, 0, 0];
+  for (; set + 6 <= sets; set += 6) {
+    const b0 = set * n;
+    const b1 = b0 + n;
+    const b2 = b1 + n;
+    const b3 = b2 + n;
+    const b4 = b3 + n;
+    const b5 = b4 + n;
+    let s0 = 0;
+    let s1 = 0;
+    let s2 = 0;
+    let s3 = 0;
+    let s4 = 0;
+    let s5 = 0;
     for (let i = 0; i < n; i++) {
       const value = row[i];
-      s0 += value * weights[base + i];
-      s1 += value * weights[base + n + i];
-      s2 += value * weights[base + 2 * n + i];
-      s3 += value * weights[base + 3 * n + i];
+      s0 += value * weights[b0 + i];
+      s1 += value * weights[b1 + i];
+      s2 += value * weights[b2 + i];
+      s3 += value * weights[b3 + i];
+      s4 += value * weights[b4 + i];
+      s5 += value * weights[b5 + i];
     }
     out[start + set] = s0;
     out[start + set + 1] = s1;
     out[start + set + 2] = s2;
     out[start + set + 3] = s3;
+    out[start + set + 4] = s4;
+    out[start + set + 5] = s5;
   }
   for (; set < sets; set++) {
     let sum = 0;

@@ -216,6 +216,7 @@ export function freeIndexPosterior(
     law,
     rates,
     logWeight: logNodeWeights(question, table, counted),
+    cutAt: law.logNorm === 'numerical' && question.rateScale !== undefined ? law.support[1] : null,
     constrained: counted.length > 0 || (largest > 0 && largest * law.support[1] >= 1e-9),
   };
   const rate = mixturePosterior(mixture);

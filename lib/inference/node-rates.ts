@@ -43,6 +43,8 @@ interface SeriesPanel {
 }
 
 const MOST_PANELS = 9;
+/** Requests after which a piece's series costs less than going on without it. */
+const WORTH_IT = 4;
 
 /** Pieces of [0, 1], each at most half of the way to 1/largest, where the logarithm is singular. */
 function panelsFor(largest: number): SeriesPanel[] {
@@ -57,18 +59,54 @@ function panelsFor(largest: number): SeriesPanel[] {
   return panels;
 }
 
-/** Value of one node's series, by Clenshaw's recurrence. */
-function seriesAt(series: Float64Array, node: number, panel: SeriesPanel, x: number): number {
-  const base = node * NODES;
-  const t = (2 * (x - panel.from)) / (panel.to - panel.from) - 1;
-  let next = 0;
-  let afterNext = 0;
-  for (let k = NODES - 1; k > 0; k--) {
-    const current = 2 * t * next - afterNext + series[base + k];
-    afterNext = next;
-    next = current;
+/** Factors taken together before one logarithm where none is below 0.1. */
+const FACTORS = 64;
+const LEAST_FACTOR = 0.1;
+
+/** ln of the product of 1 - x C_j, for factors of at least 0.1: four products side by side. */
+function logOfProduct(x: number, row: Float64Array): number {
+  const n = row.length;
+  let log = 0;
+  let j = 0;
+  for (; j + FACTORS <= n; j += FACTORS) {
+    let p0 = 1;
+    let p1 = 1;
+    let p2 = 1;
+    let p3 = 1;
+    for (let i = j; i < j + FACTORS; i += 4) {
+      p0 *= 1 - x * row[i];
+      p1 *= 1 - x * row[i + 1];
+      p2 *= 1 - x * row[i + 2];
+      p3 *= 1 - x * row[i + 3];
+    }
+    log += Math.log(p0 * p1 * p2 * p3);
   }
-  return t * next - afterNext + series[base];
+  let rest = 1;
+  for (; j < n; j++) rest *= 1 - x * row[j];
+  return log + Math.log(rest);
+}
+
+/** Values of the polynomials T_0 to T_15 at t, -1..1. */
+function chebyshevValues(t: number, out: Float64Array): void {
+  out[0] = 1;
+  out[1] = t;
+  for (let k = 2; k < NODES; k++) out[k] = 2 * t * out[k - 1] - out[k - 2];
+}
+
+/** One node's series at the place of the polynomials' values: four sums side by side. */
+function seriesAt(series: Float64Array, node: number, at: Float64Array): number {
+  const base = node * NODES;
+  let s0 = 0;
+  let s1 = 0;
+  let s2 = 0;
+  let s3 = 0;
+  for (let k = 0; k < NODES; k += 4) {
+    s0 += series[base + k] * at[k];
+    s1 += series[base + k + 1] * at[k + 1];
+    s2 += series[base + k + 2] * at[k + 2];
+    s3 += series[base + k + 3] * at[k + 3];
+  }
+  return s0 + s1 + (s2 + s3);
 }
 
 /**
@@ -90,37 +128,48 @@ export function fractionRates(
 ): NodeRates {
   const nodes = completeness.length / stars;
   const isDetected = new Set(detectedStars);
-  const others: number[] = [];
-  for (let star = 0; star < stars; star++) if (!isDetected.has(star)) others.push(star);
-  const kept = new Float64Array(nodes * others.length);
-  let largest = 0;
+  const width = stars - isDetected.size;
+  const kept = new Float64Array(nodes * width);
+  const edges = [-1, ...[...isDetected].sort((x, y) => x - y), stars];
   for (let node = 0; node < nodes; node++) {
-    for (let i = 0; i < others.length; i++) {
-      const c = completeness[node * stars + others[i]];
-      kept[node * others.length + i] = c;
-      if (c > largest) largest = c;
+    let at = node * width;
+    for (let i = 0; i + 1 < edges.length; i++) {
+      const [from, to] = [node * stars + edges[i] + 1, node * stars + edges[i + 1]];
+      kept.set(completeness.subarray(from, to), at);
+      at += to - from;
     }
   }
+  let largest = 0;
+  for (let at = 0; at < kept.length; at++) if (kept[at] > largest) largest = kept[at];
   const rows = Array.from({ length: nodes }, (_, node) =>
-    kept.subarray(node * others.length, (node + 1) * others.length),
+    kept.subarray(node * width, (node + 1) * width),
   );
   const panels = panelsFor(Math.max(largest, 1e-3));
   const values = new Float64Array(NODES);
+  const polynomials = new Float64Array(NODES);
+  const logAt = (node: number, x: number, complement: number) =>
+    1 - x * largest > LEAST_FACTOR
+      ? logOfProduct(x, rows[node])
+      : logNoDetection(x, rows[node], complement);
   const buildSeries = ({ from, to }: SeriesPanel) => {
     const series = new Float64Array(nodes * NODES);
     for (let node = 0; node < nodes; node++) {
       for (let j = 0; j < NODES; j++) {
-        values[j] = logNoDetection(from + 0.5 * (to - from) * (1 + chebyshevNodes[j]), rows[node]);
+        const x = from + 0.5 * (to - from) * (1 + chebyshevNodes[j]);
+        values[j] = logAt(node, x, 1 - x);
       }
       series.set(coefficients(values), node * NODES);
     }
     return series;
   };
-  const panelAt = (x: number) => panels.find(({ to }) => x <= to);
-  const seriesOf = (panel: SeriesPanel | undefined, requests: number) => {
+  /** Series of the piece around x, with the polynomials' values there; null: not worth it. */
+  const seriesAround = (x: number, requests: number) => {
+    const panel = panels.find(({ to }) => x <= to);
     if (panel === undefined) return null;
     panel.asked += requests / nodes;
-    if (panel.series === null && panel.asked > NODES) panel.series = buildSeries(panel);
+    if (panel.series === null && panel.asked > WORTH_IT) panel.series = buildSeries(panel);
+    if (panel.series === null) return null;
+    chebyshevValues((2 * (x - panel.from)) / (panel.to - panel.from) - 1, polynomials);
     return panel.series;
   };
   return {
@@ -128,21 +177,15 @@ export function fractionRates(
     powerOfRate: isDetected.size,
     decay: 0,
     fill(x, complement, out) {
-      const panel = panelAt(x);
-      const series = seriesOf(panel, nodes);
+      const series = seriesAround(x, nodes);
       for (let node = 0; node < nodes; node++) {
         out[node] =
-          panel === undefined || series === null
-            ? logNoDetection(x, rows[node], complement)
-            : seriesAt(series, node, panel, x);
+          series === null ? logAt(node, x, complement) : seriesAt(series, node, polynomials);
       }
     },
     logRegular(node, x, complement) {
-      const panel = panelAt(x);
-      const series = seriesOf(panel, 1);
-      return panel === undefined || series === null
-        ? logNoDetection(x, rows[node], complement)
-        : seriesAt(series, node, panel, x);
+      const series = seriesAround(x, 1);
+      return series === null ? logAt(node, x, complement) : seriesAt(series, node, polynomials);
     },
   };
 }

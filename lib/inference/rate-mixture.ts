@@ -3,8 +3,8 @@ import type { RatePosterior, RatePrior, RateQuantity } from './contract';
 import { integrateDensity } from './integrated-density';
 import type { NodeRates } from './node-rates';
 import type { RateLikelihood } from './poisson';
-import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './posterior';
 import type { PriorLaw } from './priors';
+import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './product';
 import { placeAt } from './stretches';
 
 /** A rate whose likelihood is a weighted sum over nodes. */
@@ -19,7 +19,13 @@ export interface RateMixture {
   logWeight: Float64Array;
   /** False where the data say nothing of the rate. */
   constrained: boolean;
+  /** Largest fraction that the rates of single stars allow, where it cuts the prior; else null. */
+  cutAt: number | null;
 }
+
+/** ln of the share of the posterior that may be left out at its upper end. */
+const LEFT_OUT = -50;
+const MOST_HALVINGS = 20;
 
 function logSumOf(logs: Float64Array, logWeight: Float64Array): number {
   let peak = Number.NEGATIVE_INFINITY;
@@ -60,15 +66,39 @@ export function mixtureLikelihood({
 }
 
 /**
+ * The law on the part of its support that matters: far above the peak the likelihood of a fraction is
+ * not short to write as a series, and carries nothing.
+ */
+function tightLaw(law: PriorLaw, likelihood: RateLikelihood): PriorLaw {
+  const [low, top] = law.support;
+  if (law.breaks !== undefined || likelihood.decay !== 0 || !Number.isFinite(top)) return law;
+  const { logDensity, exponentAtZero } = multiply(law, likelihood);
+  const step = Math.LN2;
+  // Between two places the rate may still rise by its power.
+  const fall = LEFT_OUT - step * Math.max(1, exponentAtZero);
+  const logs: number[] = [];
+  let peak = Number.NEGATIVE_INFINITY;
+  for (let i = 1; i <= MOST_HALVINGS && top * 2 ** -i > low; i++) {
+    const place = placeAt(top * 2 ** -i);
+    logs.push(logDensity(place) + place.logX);
+    peak = Math.max(peak, logs[i - 1]);
+    if (logs[i - 1] < peak - 1) break;
+  }
+  let halvings = 0;
+  while (halvings < logs.length && logs[halvings] < peak + fall) halvings++;
+  return halvings === 0 ? law : { ...law, support: [low, top * 2 ** -halvings] };
+}
+
+/**
  * Posterior of a rate whose likelihood is a weighted sum over nodes.
  *
  * @throws RangeError for a prior without an upper end where a node has no exposure
  * Accuracy: as `integrateDensity`. Cost: some hundred evaluations of all nodes.
  */
 export function mixturePosterior(mixture: RateMixture): RatePosterior {
-  const { law, quantity, exposure, prior, rates, constrained } = mixture;
+  const { law, quantity, exposure, prior, rates, constrained, cutAt } = mixture;
   const likelihood = mixtureLikelihood(mixture);
-  const integrated = integrateDensity(stretchesOf(law, likelihood));
+  const integrated = integrateDensity(stretchesOf(tightLaw(law, likelihood), likelihood));
   const { logDensity } = multiply(law, likelihood);
   const priorOnly = multiply(law, NO_DATA);
   const priorNorm = logPriorNorm(law);
@@ -90,7 +120,7 @@ export function mixturePosterior(mixture: RateMixture): RatePosterior {
       isOutside(x) ? 0 : Math.exp(priorOnly.logDensity(placeAt(x)) - priorNorm),
     cumulative: integrated.cumulative,
     quantile: (p) => (p === 1 ? top : integrated.quantile(p)),
-    cutAt: null,
+    cutAt,
     nodes: integrated.nodes,
   };
 }
@@ -126,7 +156,7 @@ export function rateRule(mixture: RateMixture, posterior: RatePosterior): RateRu
   const { nodes, weights } = gaussLegendre(PLACES);
   const x: number[] = [];
   const logWeight: number[] = [];
-  for (const stretch of stretchesOf(law, powers)) {
+  for (const stretch of stretchesOf(tightLaw(law, mixtureLikelihood(mixture)), powers)) {
     const inside = places.filter((place) => place > stretch.from && place < stretch.to);
     const ends = [0, ...inside.map(stretch.toV).sort((a, b) => a - b), 1];
     for (let piece = 0; piece + 1 < ends.length; piece++) {

@@ -146,7 +146,11 @@ describe('freeIndexPosterior', () => {
       prior: { law: 'uniform', max: 1 },
       rateScale: twice,
     });
-    expect(freeIndexPosterior(fraction, 6).rate.support).toEqual([0, 0.5]);
+    const cut = freeIndexPosterior(fraction, 6).rate;
+    expect(cut.support).toEqual([0, 0.5]);
+    expect(cut.cutAt).toBe(0.5);
+    expect(scaled.rate.cutAt).toBeNull();
+    expect(cut.priorDensity(0.2)).toBeCloseTo(2, 9);
   });
 
   test('what cannot be answered is refused with its reason', () => {
