@@ -105,6 +105,23 @@ describe('populations compared', () => {
   });
 });
 
+describe('how many detections', () => {
+  it('are counted exactly at a rate, and predicted over the posterior', async () => {
+    const { result } = await ask<'counts'>({ kind: 'counts', rate: 0.2 });
+    const { completeness, posterior } = answerRunQuestion(question);
+    const none = completeness.reduce((product, c) => product * (1 - 0.2 * c), 1);
+    const one = completeness.reduce((sum, c) => sum + (0.2 * c) / (1 - 0.2 * c), 0) * none;
+    expect(result.atRate[0]).toBeCloseTo(none, 12);
+    expect(result.atRate[1]).toBeCloseTo(one, 12);
+    expect(result.atRate.reduce((sum, p) => sum + p, 0)).toBeCloseTo(1, 9);
+    expect(result.counted).toBe(1);
+    expect(result.atLeastCounted).toBeCloseTo(1 - none, 12);
+    const expected = result.predictive.reduce((sum, p, k) => sum + k * p, 0);
+    const exposure = completeness.reduce((sum, c) => sum + c, 0);
+    expect(expected / (posterior.mean * exposure)).toBeCloseTo(1, 6);
+  });
+});
+
 describe('limit map', () => {
   it('holds the limit with all companions at a node, and beyond it', async () => {
     const { result } = await ask<'limit-map'>({ kind: 'limit-map', tailCumulative: true });

@@ -1,10 +1,10 @@
-import { type RateQuestion, ratePosterior, upperLimit } from '@/lib/inference';
+import { groupInfluence, starInfluence, type Without } from '@/lib/inference/influence';
 import { type RunQuestion, rateQuestionOf } from './run-question';
 
 export interface InfluenceInput {
   question: RunQuestion;
   /** Sets of stars, by index, that are left out together. */
-  groups: number[][];
+  groups: { name: string; stars: number[] }[];
 }
 
 export interface WithoutSome {
@@ -17,50 +17,25 @@ export interface InfluenceOutput {
   exposure: number;
   /** Shape [star]: what the likelihood works with. */
   completeness: number[];
-  /** One a star; null where nothing is left and the prior has no end. */
+  /** One a star; null where nothing of the rate is left. */
   stars: (WithoutSome | null)[];
   groups: (WithoutSome | null)[];
 }
 
-/** A question of the rate without some stars, their detections and their candidates. */
-export function withoutStars(question: RateQuestion, left: ReadonlySet<number>): RateQuestion {
-  const { completeness, detectedStars, rateScale, candidates } = question;
-  const kept = [...completeness.keys()].filter((star) => !left.has(star));
-  const place = new Map(kept.map((star, i) => [star, i]));
-  const pick = (values: Float64Array) => Float64Array.from(kept, (star) => values[star]);
-  const placeOf = (star: number) => place.get(star) ?? [];
-  return {
-    ...question,
-    completeness: pick(completeness),
-    detectedStars: detectedStars.flatMap(placeOf),
-    ...(rateScale && { rateScale: pick(rateScale) }),
-    ...(candidates && {
-      candidates: {
-        ...candidates,
-        entries: candidates.entries.flatMap((entry) => {
-          const star = place.get(entry.star);
-          return star === undefined ? [] : { ...entry, star };
-        }),
-      },
-    }),
-  };
-}
+const asWithout = (one: Without | null): WithoutSome | null =>
+  one && { limit: one.limit, exposure: one.exposure };
 
 /** The limit with every star, without each of them, and without each group of them. */
 export function answerInfluence({ question, groups }: InfluenceInput): InfluenceOutput {
   const { completeness, exposure, rateQuestion } = rateQuestionOf(question);
-  const { level } = question;
-  const without = (stars: number[]): WithoutSome | null => {
-    const rest = withoutStars(rateQuestion, new Set(stars));
-    if (rest.completeness.length === 0) return null;
-    const posterior = ratePosterior(rest);
-    return { limit: upperLimit(posterior, level), exposure: posterior.exposure };
-  };
+  const { limit, without } = starInfluence(rateQuestion, question.level);
   return {
-    limit: upperLimit(ratePosterior(rateQuestion), level),
+    limit,
     exposure,
     completeness: [...completeness],
-    stars: [...completeness.keys()].map((star) => without([star])),
-    groups: groups.map(without),
+    stars: without.map(asWithout),
+    groups: groupInfluence(rateQuestion, groups, question.level).map((group) =>
+      asWithout(group.without),
+    ),
   };
 }

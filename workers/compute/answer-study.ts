@@ -1,4 +1,5 @@
 import type { ResultOf } from '@/lib/schemas/study-results';
+import { answerCounts, type CountsInput } from '../answers/counts';
 import { answerFreeIndices, type FreeIndicesInput } from '../answers/free-indices';
 import { answerInfluence, type InfluenceInput, type InfluenceOutput } from '../answers/influence';
 import { answerLimit, type LimitOutput } from '../answers/limit';
@@ -12,6 +13,7 @@ export interface StudyTasks {
   limit: { input: RunQuestion; output: LimitOutput };
   influence: { input: InfluenceInput; output: InfluenceOutput };
   'free-indices': { input: FreeIndicesInput; output: ResultOf<'free-indices'> };
+  counts: { input: CountsInput; output: ResultOf<'counts'> };
   'limit-map': { input: LimitMapInput; output: ResultOf<'limit-map'> };
   sweep: { input: SweepInput; output: ResultOf<'sweep'> };
   'population-comparison': {
@@ -28,6 +30,7 @@ const answers: Answers = {
   limit: answerLimit,
   influence: answerInfluence,
   'free-indices': answerFreeIndices,
+  counts: answerCounts,
   'limit-map': answerLimitMap,
   sweep: answerSweep,
   'population-comparison': answerComparison,

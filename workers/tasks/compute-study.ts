@@ -7,6 +7,7 @@ import { digestOf } from '@/models/digest';
 import type { Work } from '../perform';
 import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
+import { performCounts } from './study-counts';
 import { performFreeIndices } from './study-free-indices';
 import { performInfluence } from './study-influence';
 import { performLimitMap, performSweep } from './study-limits';
@@ -16,6 +17,7 @@ import { headlineOf } from './study-words';
 
 const studyKinds: { [Kind in StudyKind]?: StudyPerformer<Kind> } = {
   'free-indices': performFreeIndices,
+  counts: performCounts,
   influence: performInfluence,
   'limit-map': performLimitMap,
   sweep: performSweep,

@@ -20,7 +20,7 @@ export const performInfluence: StudyPerformer<'influence'> = async (given, setti
   const { inputs, result } = run;
   await given.report('stars', 0, inputs.stars.length);
   const groups = await groupStars(given, settings.groupBy);
-  const members = [...groups.values()];
+  const members = [...groups].map(([name, stars]) => ({ name, stars }));
   const found = await given.compute('influence', { question, groups: members });
   await given.report('stars', inputs.stars.length, inputs.stars.length);
   const surveys = await withoutEachSurvey(given, found.limit);
@@ -43,9 +43,9 @@ export const performInfluence: StudyPerformer<'influence'> = async (given, setti
     exposure: found.exposure,
     stars,
     surveys,
-    groups: [...groups.keys()].flatMap((name, i) => {
+    groups: members.flatMap(({ name, stars: { length } }, i) => {
       const without = found.groups[i];
-      return without ? { name, stars: members[i].length, without: beside(without) } : [];
+      return without ? { name, stars: length, without: beside(without) } : [];
     }),
     halfCarriedBy: countHalf(found.completeness),
     notes: notesOf(inputs.surveys.length, stars),
