@@ -44,7 +44,7 @@ export interface LimitFieldChartProps {
   height?: number;
 }
 
-const margin: Box = { left: 46, right: 16, top: 8, bottom: 48 };
+const margin: Box = { left: 46, right: 16, top: 30, bottom: 48 };
 const noDetections: MapDetection[] = [];
 
 /** A limit over two axes: bands and contours of it, read at each node by pointer or keys. */
@@ -82,11 +82,10 @@ export function LimitFieldChart(props: LimitFieldChartProps) {
       bottom: py + 12,
     });
     return [
-      { left: frame.left, right: frame.left + 120, top: frame.top, bottom: frame.top + 24 },
       ...detections.map((one) => around(x(one.semiMajorAxisAu), y(one.massMjup), 12)),
       ...(here ? [around(x(here.x), y(here.y), 90)] : []),
     ];
-  }, [frame, x, y, detections, here]);
+  }, [x, y, detections, here]);
   const say = ({ column, row }: ReadPlace) => {
     const one = limit[row][column];
     return [
@@ -158,9 +157,10 @@ export function LimitFieldChart(props: LimitFieldChartProps) {
         x={frame.left}
         y0={frame.bottom}
         y1={frame.top}
-        nameClassName="page-halo-thin"
-        name={yAxis.name}
       />
+      <text className="quiet" x={0} y={14}>
+        {yAxis.name}
+      </text>
     </ChartFigure>
   );
 }

@@ -113,8 +113,9 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
           />
           <text
             className="quiet page-halo"
-            x={Math.min(x(axis.at[from]), frame.right - textWidth('set by the prior', 13) - 8) + 4}
-            y={frame.bottom - 10}
+            x={stretchName(x(axis.at[from]), x(axis.at[to])).x}
+            y={frame.top + 16}
+            textAnchor={stretchName(x(axis.at[from]), x(axis.at[to])).anchor}
           >
             set by the prior
           </text>
@@ -216,6 +217,14 @@ function stretches(flags: boolean[]): [number, number][] {
   return stepsOf(flags.map(Number))
     .filter(({ count }) => count === 1)
     .map(({ from, to }) => [from, to]);
+}
+
+/** Inside a stretch that is wide enough, else beside it on the left. */
+function stretchName(from: number, to: number) {
+  const isWide = to - from > textWidth('set by the prior', 13) + 10;
+  return isWide || from < 130
+    ? { x: from + 5, anchor: 'start' as const }
+    : { x: from - 5, anchor: 'end' as const };
 }
 
 /** The dashed curve carries its name where it lies furthest below the other. */

@@ -1,8 +1,11 @@
 import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { countsInWords } from './counts/counts-words';
+import { freeIndicesInWords } from './free-indices/free-indices-words';
 import type { KindEntry } from './kind-entry';
 import { limitMapInWords } from './limit-map/limit-map-words';
+import { overlapRulesInWords } from './overlap-rules/overlap-words';
+import { comparisonInWords } from './population-comparison/comparison-words';
 import { sweepInWords } from './sweep/sweep-words';
 
 const AnswerWaits = () => (
@@ -34,6 +37,43 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer, whileAnswer),
     settingsInWords: sweepInWords,
     loadTables: async () => (await import('./sweep/sweep-tables')).sweepTables,
+  },
+  'free-indices': {
+    Form: dynamic(
+      async () => (await import('./free-indices/free-indices-form')).FreeIndicesForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./free-indices/free-indices-answer')).FreeIndicesAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: freeIndicesInWords,
+    loadTables: async () => (await import('./free-indices/free-indices-tables')).freeIndicesTables,
+  },
+  'overlap-rules': {
+    Form: dynamic(
+      async () => (await import('./overlap-rules/overlap-form')).OverlapForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./overlap-rules/overlap-answer')).OverlapAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: overlapRulesInWords,
+    loadTables: async () => (await import('./overlap-rules/overlap-tables')).overlapTables,
+  },
+  'population-comparison': {
+    Form: dynamic(
+      async () => (await import('./population-comparison/comparison-form')).ComparisonForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./population-comparison/comparison-answer')).ComparisonAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: comparisonInWords,
+    loadTables: async () =>
+      (await import('./population-comparison/comparison-tables')).comparisonTables,
   },
   counts: {
     Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, whileForm),

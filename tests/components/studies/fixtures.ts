@@ -43,7 +43,7 @@ export function buildLimitMap(): ResultOf<'limit-map'> {
 
 export function buildSweep(): ResultOf<'sweep'> {
   const value = logAxis(30, 1000, 31);
-  const limitZero = value.map((au) => 0.0105 + 0.0003 * (au / 30) ** 1.35);
+  const limitZero = value.map((au) => 0.0105 + 0.00075 * (au / 30) ** 1.35);
   return {
     kind: 'sweep',
     over: 'semi-major-axis-max',

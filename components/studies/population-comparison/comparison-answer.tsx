@@ -1,0 +1,80 @@
+'use client';
+
+import Link from 'next/link';
+import { EvidenceChart, formatLogB } from '@/components/charts/evidence-chart';
+import { StateMark } from '@/components/ui/state-mark';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { formatPlain, formatSignificant } from '@/lib/quantities/display';
+import { AnswerNotes } from '../answer-notes';
+import type { AnswerProps } from '../kind-entry';
+import { evidenceInWords, evidenceSource, evidenceSteps } from './comparison-words';
+
+/** Which population the data speak for, with its evidence, its limit and why one has none. */
+export function ComparisonAnswer({ asked, result }: AnswerProps<'population-comparison'>) {
+  const { rows } = result;
+  const unit = asked.quantity === 'host_fraction' ? '%' : 'per 100 stars';
+  return (
+    <>
+      <EvidenceChart
+        steps={evidenceSteps}
+        rows={rows.map((row) => ({
+          key: row.populationId,
+          name: `${row.key} ${row.name}${row.isOwn ? ', the run’s own' : ''}`,
+          logBayesFactor: row.logBayesFactor,
+          isOwn: row.isOwn,
+          fault: row.fault,
+        }))}
+      />
+      <div className="mt-5">
+        <Table caption="Evidence, limit and detections under each population">
+          <TableHead>
+            <tr>
+              <HeadCell>population</HeadCell>
+              <HeadCell isNumeric>
+                ln <i>B</i>
+              </HeadCell>
+              <HeadCell>which says</HeadCell>
+              <HeadCell isNumeric>limit, {unit}</HeadCell>
+              <HeadCell isNumeric>sum over stars</HeadCell>
+              <HeadCell isNumeric>detections</HeadCell>
+            </tr>
+          </TableHead>
+          <TableBody>
+            {rows.map((row) => (
+              <Row key={row.populationId} isSelected={row.isOwn}>
+                <Cell isRowHead className="min-w-60">
+                  <Link href={`/${asked.collaboration}/populations/${row.key}`}>
+                    {row.key} {row.name}
+                  </Link>
+                  , version {row.version}
+                  <span className="block font-normal text-chart text-ink3">{row.words}</span>
+                </Cell>
+                <Cell isNumeric>
+                  {row.logBayesFactor === null ? '–' : formatLogB(row.logBayesFactor)}
+                </Cell>
+                <Cell className="min-w-44">{saysOf(row)}</Cell>
+                <Cell isNumeric className={row.limit === null ? '' : 'limit'}>
+                  {row.limit === null ? '–' : `<${formatSignificant(100 * row.limit, 2)}`}
+                </Cell>
+                <Cell isNumeric>
+                  {row.exposure === null ? '–' : formatSignificant(row.exposure, 3)}
+                </Cell>
+                <Cell isNumeric>
+                  {row.detections === null ? '–' : formatPlain(row.detections, 3)}
+                </Cell>
+              </Row>
+            ))}
+          </TableBody>
+        </Table>
+      </div>
+      <p className="mt-2 text-chart text-ink3">{evidenceSource}</p>
+      <AnswerNotes notes={result.notes} />
+    </>
+  );
+}
+
+function saysOf(row: AnswerProps<'population-comparison'>['result']['rows'][number]) {
+  if (row.isOwn) return 'the run’s own';
+  if (row.fault !== null) return <StateMark kind="warn">{row.fault}</StateMark>;
+  return row.logBayesFactor === null ? '–' : evidenceInWords(row.logBayesFactor);
+}
