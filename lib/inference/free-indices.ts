@@ -9,6 +9,7 @@ import {
 import type { Likelihood, RatePosterior, RatePrior } from './contract';
 import { logDetectionShapes } from './detection-shape';
 import { INDEX_NODES, type IndexRanges, type IndexTable, indexTable } from './index-table';
+import { sumMaps } from './limit-map';
 import type { MeasuredDetection } from './measured-places';
 import { fractionRates, numberRates } from './node-rates';
 import { type PriorLaw, priorLaw } from './priors';
@@ -45,12 +46,25 @@ export interface FreeIndexPosterior {
   rateMean: Float64Array;
 }
 
-/** The table with each star's own rate in it: f s_j C_j is f times an entry. */
-function scaleTable(table: IndexTable, rateScale: Float64Array | undefined): IndexTable {
-  if (rateScale === undefined) return table;
+/**
+ * What each pair of indices would show, with each star's own rate in it: f s_j C_j is f times an
+ * entry. The mean number needs no more of the maps than their sum.
+ */
+function tableOf(question: FreeIndexQuestion, nodes: number): IndexTable {
+  const { maps, grid, box, indices, likelihood, rateScale } = question;
+  if ('summed' in maps || likelihood === 'mean-number') {
+    if (likelihood === 'host-fraction') {
+      throw new RangeError("the host fraction needs each star's map, not only their sum");
+    }
+    const summed = sumMaps(maps, grid, rateScale);
+    const stars = 'summed' in maps ? maps.stars : maps.length / summed.length;
+    return indexTable({ summed, stars }, grid, box, indices, nodes);
+  }
+  const table = indexTable(maps, grid, box, indices, nodes);
   const { completeness, stars } = table;
-  if (completeness === null || rateScale.length !== stars) {
-    throw new RangeError('a rate that differs from star to star needs a scale and a map for each');
+  if (rateScale === undefined || completeness === null) return table;
+  if (rateScale.length !== stars) {
+    throw new RangeError(`a scale for each of ${stars} stars is needed, got ${rateScale.length}`);
   }
   const exposure = new Float64Array(table.exposure.length);
   const scaled = completeness.map((c, at) => {
@@ -78,6 +92,7 @@ function lawOf(question: FreeIndexQuestion): PriorLaw {
   return { ...law, support: [low, cut], logNorm: 'numerical' };
 }
 
+/** For the host fraction the star of a detection must be able to show something. */
 function requireSeen(detections: readonly MeasuredDetection[], table: IndexTable): void {
   const { completeness, stars } = table;
   for (const { name, star } of detections) {
@@ -179,9 +194,9 @@ export function freeIndexPosterior(
   question: FreeIndexQuestion,
   nodes = INDEX_NODES,
 ): FreeIndexPosterior {
-  const { maps, grid, box, indices, likelihood, prior } = question;
+  const { box, likelihood, prior } = question;
   const law = lawOf(question);
-  const table = scaleTable(indexTable(maps, grid, box, indices, nodes), question.rateScale);
+  const table = tableOf(question, nodes);
   const shape = { ...box, massIndex: 0, semiMajorAxisIndex: 0 };
   const { counted, setAside } = countDetections(
     question.detections,
@@ -189,11 +204,8 @@ export function freeIndexPosterior(
     likelihood,
   ) as { counted: MeasuredDetection[]; setAside: DetectionSetAside[] };
   requireSeen(counted, table);
-  if (likelihood === 'host-fraction' && table.completeness === null) {
-    throw new RangeError("the host fraction needs each star's map, not only their sum");
-  }
   const rates =
-    likelihood === 'mean-number' || table.completeness === null
+    table.completeness === null
       ? numberRates(table.exposure, counted.length)
       : fractionRates(
           table.completeness,

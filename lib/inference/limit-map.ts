@@ -53,7 +53,7 @@ function starsAlongRow(
  *
  * @param rateScale s_j, shape [star]; absent: 1 for all
  * @returns S(m, a), shape [mass, semiMajorAxis] [stars]
- * @throws RangeError for maps that do not fit the grid
+ * @throws RangeError for maps that do not fit the grid, and for a scale that is not one a star
  */
 export function sumMaps(
   maps: StackedMaps | SummedMap,
@@ -71,6 +71,11 @@ export function sumMaps(
   const stars = maps.length / size;
   if (!Number.isInteger(stars)) {
     throw new RangeError(`the maps hold ${maps.length} values, not a multiple of ${size} nodes`);
+  }
+  if (rateScale !== undefined && rateScale.length !== stars) {
+    throw new RangeError(
+      `rateScale has one value a star, got ${rateScale.length} for ${stars} stars`,
+    );
   }
   const summed = new Float64Array(size);
   for (let star = 0; star < stars; star++) {

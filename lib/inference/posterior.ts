@@ -8,8 +8,6 @@ import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './product';
 import { lawBelow } from './rate-scale';
 import { placeAt } from './stretches';
 
-export { logPriorNorm, multiply, NO_DATA, type Product, stretchesOf } from './product';
-
 /** Below this many expected detections at the largest rate the data say nothing. */
 const NOTHING_OBSERVABLE = 1e-9;
 

@@ -36,6 +36,8 @@ export interface SettledIndices {
 const LIMIT_MOVE = 1e-4;
 const MEANS_MOVE = 2e-3;
 const MOST_NODES = 96;
+/** Entries of a table a star and pair of nodes, 8 bytes each. */
+const MOST_ENTRIES = 4e7;
 const CELLS = 61;
 const LIMITING_SHARE = 0.01;
 
@@ -100,8 +102,10 @@ function notesOn(settled: Omit<SettledIndices, 'notes'>): string[] {
   }
   if (!isSettled) {
     notes.push(
-      `${nodes} nodes a side did not bring the answer to rest: the limit still moved by ` +
-        `${limitMovedBy.toExponential(1)} of itself when they were last doubled.`,
+      `${nodes} nodes a side did not bring the answer to rest: ` +
+        (Number.isFinite(limitMovedBy)
+          ? `the limit still moved by ${limitMovedBy.toExponential(1)} of itself when they were last doubled.`
+          : 'the sample is too large to double them.'),
     );
   }
   return notes;
@@ -114,7 +118,8 @@ function notesOn(settled: Omit<SettledIndices, 'notes'>): string[] {
  *
  * @param question as `freeIndexPosterior`
  * @param level credible level of the limit [fraction]
- * @param options nodes a side to begin with (default 12), and the most (default 96)
+ * @param options nodes a side to begin with (default 12), and the most (default 96, fewer where a
+ *   table of every star would exceed 320 MB)
  * @throws RangeError as `freeIndexPosterior`, and for a level outside (0, 1)
  * Cost: 12 and then 24 nodes for ranges some units wide: five times `freeIndexPosterior`.
  */
@@ -132,7 +137,10 @@ export function freeIndices(
   let limit = upperLimit(posterior.rate, level);
   let [limitMovedBy, meansMovedBy] = [Number.POSITIVE_INFINITY, Number.POSITIVE_INFINITY];
   const isAtRest = () => limitMovedBy <= LIMIT_MOVE && meansMovedBy <= MEANS_MOVE;
-  while (!isAtRest() && 2 * nodes <= mostNodes) {
+  const fits = (side: number) =>
+    side <= mostNodes &&
+    (posterior.table.completeness === null || side ** 2 * posterior.table.stars <= MOST_ENTRIES);
+  while (!isAtRest() && fits(2 * nodes)) {
     nodes *= 2;
     const finer = freeIndexPosterior(question, nodes);
     const moved = upperLimit(finer.rate, level);

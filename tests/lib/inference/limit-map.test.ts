@@ -141,5 +141,6 @@ describe('limitMap', () => {
     expect(() =>
       limitMap({ ...shared, maps: summed, likelihood: 'host-fraction', prior: numberPriors[0] }),
     ).toThrow("the host fraction needs each star's map");
+    expect(() => sumMaps(maps, GRID, Float64Array.of(1, 2))).toThrow('got 2 for 30 stars');
   });
 });
