@@ -8,6 +8,7 @@ import { uploadLimits } from './limits';
 import { longMapColumns, readLongMaps } from './maps-long';
 import type { TableReading } from './reading';
 import { readSampleRows, sampleColumns } from './samples';
+import { readSystems, systemsColumns } from './systems';
 import { targetColumns } from './target-columns';
 import { readTargets } from './targets';
 
@@ -52,6 +53,12 @@ export const kindReaders: { [K in UploadKind]: KindReader<RecordsOfKind[K][numbe
     read: readCoolingTable,
     maxRows: uploadLimits.tableRows,
     what: 'age and mass',
+  },
+  systems: {
+    columns: () => ({ specs: systemsColumns }),
+    read: readSystems,
+    maxRows: uploadLimits.systemRows,
+    what: 'system',
   },
 };
 

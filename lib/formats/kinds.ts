@@ -6,7 +6,8 @@ export type UploadKind =
   | 'contrast-curves'
   | 'completeness-maps'
   | 'companions'
-  | 'cooling-tables';
+  | 'cooling-tables'
+  | 'systems';
 
 /** How the bytes of a file are laid out, told by the first of them. */
 export type Container = 'csv' | 'ecsv' | 'votable' | 'fits' | 'npy' | 'npz' | 'hdf5' | 'json';
@@ -174,6 +175,16 @@ export interface CoolingTableRecord {
   temperatureK: (number | null)[] | null;
 }
 
+/** Planetary systems in columns; a system without companions counts. */
+export interface SystemsRecord {
+  /** Shape [system], >= 0; only their ratios matter. */
+  weight: number[];
+  /** Shape [companion]: index of its system. */
+  companionSystem: number[];
+  massMjup: number[];
+  semiMajorAxisAu: number[];
+}
+
 /** Posterior draws of one companion, one entry per draw. */
 export interface SampleRecord {
   target: string;
@@ -191,6 +202,7 @@ export interface RecordsOfKind {
   'completeness-maps': MapRecord[];
   companions: CompanionRecord[];
   'cooling-tables': CoolingTableRecord[];
+  systems: SystemsRecord[];
 }
 export type ParsedRecords = RecordsOfKind[UploadKind];
 

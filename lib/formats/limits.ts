@@ -7,6 +7,8 @@ export const uploadLimits = {
   tableColumns: 500,
   cellCharacters: 65_536,
   nameCharacters: 100,
+  /** Companions and empty systems together: as many as a population may hold. */
+  systemRows: 20_000,
   longMapRows: 20_000_000,
   mapSideMin: 2,
   mapSideMax: 512,

@@ -8,13 +8,14 @@ export const uploadKindSchema = z.enum([
   'completeness-maps',
   'companions',
   'cooling-tables',
+  'systems',
 ]);
 export type UploadKindName = z.infer<typeof uploadKindSchema>;
 
 /** The query of POST …/uploads; the body is the file itself, its SHA-256 may come in a header. */
 export const uploadQuerySchema = z.strictObject({
   kind: uploadKindSchema,
-  /** Needed for every kind but cooling tables. */
+  /** Needed for every kind but cooling tables and systems. */
   survey: z.string().optional(),
   name: lineSchema(200),
   /** Settings for the first reading, as JSON. */
@@ -35,8 +36,10 @@ export const uploadSettingsSchema = z.strictObject({
     .optional(),
   /** Heading in the file → our column, or '' to leave it out. */
   columnMap: z.record(z.string(), z.string()).optional(),
-  /** Name of a cooling table. */
+  /** Name of a cooling table, or of the population that systems become. */
   title: lineSchema(100).optional(),
+  /** Systems: number of the population of which they are a new version. */
+  versionOf: z.number().int().positive().optional(),
   /** Items of the file that are left out: a target's name. */
   leaveOut: z.array(z.string()).optional(),
 });

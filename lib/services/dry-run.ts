@@ -10,6 +10,7 @@ import { planCompletenessMaps } from './intake/completeness-maps';
 import { planContrastCurves } from './intake/contrast-curves';
 import { planCoolingTable } from './intake/cooling-table';
 import type { Plan } from './intake/plan';
+import { planSystems } from './intake/systems';
 import { planTargets } from './intake/targets';
 import { readOnThread } from './reading';
 
@@ -79,6 +80,12 @@ async function planOf(
   if (read.kind === 'cooling-tables') {
     const title = source.settings.title ?? source.fileName.replace(/\.[^.]+$/, '');
     return planCoolingTable(actor, title, read.records[0]);
+  }
+  if (read.kind === 'systems') {
+    const { fileName, settings } = source;
+    const title = settings.title ?? fileName.replace(/\.[^.]+$/, '');
+    const request = { title, fileName, versionOf: settings.versionOf };
+    return planSystems(actor, request, read.records[0]);
   }
   if (!source.survey) throw new NotFound('survey');
   const context = { actor, survey: source.survey };

@@ -226,18 +226,25 @@ export async function createPopulation(
   actor: Actor,
   input: CreatePopulation,
 ): Promise<PopulationView> {
+  return inTransaction((transaction) => createPopulationIn(actor, input, transaction));
+}
+
+/** The same inside a transaction that stores more, such as the file that it comes from. */
+export async function createPopulationIn(
+  actor: Actor,
+  input: CreatePopulation,
+  transaction: Transaction,
+): Promise<PopulationView> {
   const { versionOf, ...version } = input;
-  if (versionOf !== undefined) return createPopulationVersion(actor, `P-${versionOf}`, version);
+  if (versionOf !== undefined) return addVersion(actor, `P-${versionOf}`, version, transaction);
   demand(actor, 'save-population', { isOwn: true });
   if (input.isShared) demand(actor, 'share-population');
-  return inTransaction(async (transaction) => {
-    await lockNumbers(actor, transaction);
-    const newest = await PopulationRow.max<number | null, PopulationRow>('number', {
-      where: { collaborationId: actor.collaborationId },
-      transaction,
-    });
-    return insert(actor, { ...version, number: (newest ?? 0) + 1, version: 1 }, transaction);
+  await lockNumbers(actor, transaction);
+  const newest = await PopulationRow.max<number | null, PopulationRow>('number', {
+    where: { collaborationId: actor.collaborationId },
+    transaction,
   });
+  return insert(actor, { ...version, number: (newest ?? 0) + 1, version: 1 }, transaction);
 }
 
 /** A new version; earlier ones stay as they are, and so does what was made with them. */
@@ -246,19 +253,26 @@ export async function createPopulationVersion(
   key: string,
   input: CreateVersion,
 ): Promise<PopulationView> {
-  return inTransaction(async (transaction) => {
-    await lockNumbers(actor, transaction);
-    const before = await findVersion(actor, key, undefined, transaction);
-    demand(actor, 'save-population', standing(actor, before));
-    const isShared = input.isShared ?? before.isShared;
-    if (isShared) demand(actor, 'share-population');
-    const { number, name } = before;
-    return insert(
-      actor,
-      { ...input, name: input.name ?? name, number, version: before.version + 1, isShared },
-      transaction,
-    );
-  });
+  return inTransaction((transaction) => addVersion(actor, key, input, transaction));
+}
+
+async function addVersion(
+  actor: Actor,
+  key: string,
+  input: CreateVersion,
+  transaction: Transaction,
+): Promise<PopulationView> {
+  await lockNumbers(actor, transaction);
+  const before = await findVersion(actor, key, undefined, transaction);
+  demand(actor, 'save-population', standing(actor, before));
+  const isShared = input.isShared ?? before.isShared;
+  if (isShared) demand(actor, 'share-population');
+  const { number, name } = before;
+  return insert(
+    actor,
+    { ...input, name: input.name ?? name, number, version: before.version + 1, isShared },
+    transaction,
+  );
 }
 
 /** Shares a version with all, or takes it back; its definition stays. */

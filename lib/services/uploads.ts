@@ -68,6 +68,10 @@ async function surveyFor(
     demand(actor, 'import-cooling-table');
     return null;
   }
+  if (kind === 'systems') {
+    demand(actor, 'save-population', { isOwn: true });
+    return null;
+  }
   if (slug === undefined) {
     throw new InputError(
       {
@@ -164,8 +168,9 @@ export async function getUploadBytes(actor: Actor, id: string) {
   return { bytes: await loadParts(row.id), fileName: row.fileName, sha256: row.sha256 };
 }
 
-function demandImport(actor: Actor, survey: SurveyRow | null): void {
+function demandImport(actor: Actor, { kind }: UploadRow, survey: SurveyRow | null): void {
   if (survey) demand(actor, 'import', { isLead: isLead(actor, survey) });
+  else if (kind === 'systems') demand(actor, 'save-population', { isOwn: true });
   else demand(actor, 'import-cooling-table');
 }
 
@@ -176,7 +181,7 @@ export async function changeUpload(
   settings: UploadSettings,
 ): Promise<UploadView> {
   const { row, survey } = await findUpload(actor, id);
-  demandImport(actor, survey);
+  demandImport(actor, row, survey);
   if (row.state === 'stored')
     throw new Conflict('This file is stored already; upload it again to change how it is read');
   const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
@@ -188,7 +193,7 @@ export async function changeUpload(
 /** Stores all that the file says in one transaction, and starts the maps that follow from it. */
 export async function storeUpload(actor: Actor, id: string): Promise<UploadView> {
   const { row, survey } = await findUpload(actor, id);
-  demandImport(actor, survey);
+  demandImport(actor, row, survey);
   if (row.state === 'stored') return describeUpload(row);
   const source: Source = {
     kind: row.kind as UploadKind,

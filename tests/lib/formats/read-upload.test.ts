@@ -9,6 +9,7 @@ const kinds: UploadKind[] = [
   'completeness-maps',
   'companions',
   'cooling-tables',
+  'systems',
 ];
 const headings: Record<UploadKind, string> = {
   targets: 'name,other_names,gaia_dr3_id,ra,dec,parallax,distance,age,age_error,mag_K,notes',
@@ -16,6 +17,7 @@ const headings: Record<UploadKind, string> = {
   'completeness-maps': 'target,mass,semi_major_axis,completeness',
   companions: 'target,companion,status,mass,mass_error,semi_major_axis,band,epoch',
   'cooling-tables': 'age,mass,mag_K,mag_J',
+  systems: 'system,weight,mass,semi_major_axis',
 };
 const cell = fc.oneof(
   fc.constantFrom(
