@@ -30,6 +30,9 @@ export interface JointDensity {
 /** Points of each curve and of each side of a joint density. */
 export const SURFACE_POINTS = 61;
 
+/** ln of the least share that is interpolated: a share of nothing has no logarithm. */
+const LEAST_LOG = -700;
+
 type Side = 'massIndex' | 'semiMajorAxisIndex';
 
 const sizeOf = ({ table }: FreeIndexPosterior): [number, number] => [
@@ -140,12 +143,13 @@ function jointWithRate(posterior: FreeIndexPosterior, side: Side): JointDensity 
   const density = new Float64Array(x.length * y.length);
   for (let j = 0; j < y.length; j++) {
     const marginal = rate.density(y[j]);
+    if (marginal === 0) continue;
     if (mixture.constrained) mixture.rates.fill(y[j], 1 - y[j], logs);
-    const parts = Float64Array.from(groups, (group, place) => {
-      const own = group.map((node) => logs[node] + mixture.logWeight[node]);
-      return logSumExp(own) - Math.log(nodes.weight[place] * width);
-    });
     const whole = logSumExp(logs.map((one, node) => one + mixture.logWeight[node]));
+    const parts = Float64Array.from(groups, (group, place) => {
+      const own = logSumExp(group.map((node) => logs[node] + mixture.logWeight[node]));
+      return Math.max(own, whole + LEAST_LOG) - Math.log(nodes.weight[place] * width);
+    });
     for (let i = 0; i < x.length; i++) {
       let log = 0;
       for (let k = 0; k < parts.length; k++) log += rows[i * parts.length + k] * parts[k];

@@ -264,6 +264,23 @@ describe('summariseIndices', () => {
     }
   });
 
+  test('stars that would certainly have shown a companion leave every number finite', () => {
+    const certain = maps.slice();
+    certain.fill(1, 0, 2 * GRID.massMjup.length * GRID.semiMajorAxisAu.length);
+    const seen = freeIndexPosterior(
+      question({
+        maps: certain,
+        likelihood: 'host-fraction',
+        prior: { law: 'uniform', max: 1 },
+        detections: [],
+      }),
+    );
+    const { rateByMassIndex, massIndex } = summariseIndices(seen);
+    expect(rateByMassIndex.density.every(Number.isFinite)).toBe(true);
+    expect(massIndex.marginal.density.every((d) => d > 0)).toBe(true);
+    expect(seen.rate.density(1)).toBeLessThan(1e-20);
+  });
+
   test('the limit for each index lies around the limit without it, and meets a fixed one', () => {
     const { value, limit } = limitByIndex(posterior, 'massIndex', 0.95);
     const whole = posterior.rate.quantile(0.95);
