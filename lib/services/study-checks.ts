@@ -1,5 +1,5 @@
 import type { Transaction } from 'sequelize';
-import type { Population } from '@/lib/population';
+import { needsHostMass, type Population } from '@/lib/population';
 import type { RatePriorInput } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { SettingsOf, StudyKind, StudySettings } from '@/lib/schemas/study-settings';
@@ -101,7 +101,7 @@ const checks: { [Kind in StudyKind]?: Check<Kind> } = {
 
   counts: ({ run, settings }) => checkRate(run, 'rate', settings.rate),
 
-  forecast: async ({ run, inputs, settings, transaction }) => {
+  forecast: async ({ run, inputs, settings, population, transaction }) => {
     checkRate(run, 'assumedRate', settings.assumedRate);
     checkRate(run, 'wantedLimit', settings.wantedLimit);
     const { planned } = settings;
@@ -114,6 +114,14 @@ const checks: { [Kind in StudyKind]?: Check<Kind> } = {
       return;
     }
     checkCurve(planned.curve);
+    const massless = planned.targets.findIndex((target) => target.hostMassMsun === undefined);
+    if (needsHostMass(population) && massless >= 0) {
+      refuse(
+        `planned.targets.${massless}.hostMassMsun`,
+        'Expected a mass: the population of this run depends on it',
+        'value-missing',
+      );
+    }
     const survey = await SurveyRow.findByPk(inputs.surveys[0].id, {
       attributes: ['id'],
       transaction,

@@ -5,7 +5,7 @@ import { populationBox } from '@/lib/population';
 import type { StudyKind } from '@/lib/schemas/study-settings';
 import { studySettingsSchema } from '@/lib/schemas/study-settings';
 import { startStudy } from '@/lib/services/studies';
-import type { PopulationRow } from '@/models';
+import { type PopulationRow, TargetRow } from '@/models';
 import { answerRunQuestion, type RunQuestion } from '@/workers/answers/run-question';
 import { withDatabase } from '../support/database';
 import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
@@ -92,6 +92,34 @@ describe('populations compared', () => {
     expect(inputs.further.map(({ digest }) => digest).sort()).toEqual(
       [lab.run.inputs?.population.digest, steeper.digest, wide.digest].sort(),
     );
+  });
+
+  it('take host masses from the targets where the run had no need of them', async () => {
+    const ratio = await buildPopulation(lab.collaboration.id, {
+      form: 'mass-ratio',
+      massRatioMin: 0.003,
+      massRatioMax: 0.04,
+      massRatioIndex: -0.3,
+      semiMajorAxisMinAu: 10,
+      semiMajorAxisMaxAu: 200,
+      semiMajorAxis: { shape: 'power-law', index: 0.39 },
+    });
+    const settings = { kind: 'population-comparison' as const, populationIds: [ratio.id] };
+    const without = await ask<'population-comparison'>(settings);
+    expect(without.result.rows[1].fault).toContain('mass');
+    await TargetRow.update({ hostMassMsun: 0.9 }, { where: { surveyId: lab.survey.id } });
+    const { result, inputs } = await ask<'population-comparison'>({
+      ...settings,
+      populationIds: [ratio.id, steeper.id],
+    });
+    await TargetRow.update({ hostMassMsun: null }, { where: { surveyId: lab.survey.id } });
+    const direct = answerRunQuestion({
+      ...question,
+      population: ratio.definition,
+      hostMassMsun: question.hostMassMsun.map(() => 0.9),
+    });
+    expect(result.rows[1].limit).toBe(direct.limit);
+    expect(inputs.further.map(({ what }) => what)).toContain('host masses');
   });
 
   it('are refused for a population that is not there', async () => {

@@ -2,6 +2,7 @@ import { InputError } from '@/lib/errors';
 import { PopulationRow } from '@/models';
 import type { ComparedInput } from '../answers/population-comparison';
 import type { StudyPerformer } from './study-context';
+import { hostMassesUnder } from './study-hosts';
 
 const namedInput = (row: PopulationRow): ComparedInput => ({
   populationId: row.id,
@@ -34,9 +35,13 @@ export const performComparison: StudyPerformer<'population-comparison'> = async 
   for (const { number, version, digest } of rows) {
     given.further.push({ what: `population P-${number} version ${version}`, digest });
   }
+  const hostMassMsun = await hostMassesUnder(
+    given,
+    rows.map(({ definition }) => definition),
+  );
   await given.report('populations', 0, 1);
   const compared = await given.compute('population-comparison', {
-    question,
+    question: { ...question, hostMassMsun },
     populations: rows.map(namedInput),
   });
   await given.report('populations', 1, 1);
