@@ -19,6 +19,8 @@ export interface CoolingPaths {
   /** Place within the cell at both ends, 0 to 1. */
   fromShare: Float64Array;
   toShare: Float64Array;
+  /** Whether a mass has a magnitude at every age and never brightens, shape [mass]: 1 or 0. */
+  fades: Uint8Array;
   /** Most stretches of any mass. */
   longest: number;
 }
@@ -220,9 +222,17 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
   }
   begins[masses] = cell.length;
   let longest = 0;
-  for (let i = 0; i < masses; i++) longest = Math.max(longest, begins[i + 1] - begins[i]);
+  const fades = new Uint8Array(masses).fill(1);
+  for (let i = 0; i < masses; i++) {
+    longest = Math.max(longest, begins[i + 1] - begins[i]);
+    for (let s = begins[i]; s < begins[i + 1]; s++) {
+      const isFainter = s === begins[i] || cell[s] >= cell[s - 1];
+      if (cell[s] === UNDETECTABLE || !isFainter) fades[i] = 0;
+    }
+  }
   return {
     longest,
+    fades,
     cellMag,
     begins,
     fromLogAge: Float64Array.from(fromLogAge),

@@ -74,6 +74,38 @@ export function coolNodes(
   };
 }
 
+/**
+ * The report of coolNodes alone, for a star whose ages are integrated without nodes.
+ *
+ * @param relation built-in law, or a table
+ * @param band the curve's band
+ * @param massMjup mass nodes, [M_Jup], not modified
+ * @param agesMyr age nodes, [Myr], not modified
+ * @param policy what to do outside the relation
+ * @param starName for the error
+ * @throws as coolNodes does
+ */
+export function coolingReport(
+  relation: CoolingRelation,
+  band: string,
+  massMjup: Float64Array,
+  agesMyr: Float64Array,
+  policy: AgePolicy,
+  starName: string,
+): CoolingReport {
+  let told = agesMyr;
+  if (relation.kind === 'built-in') {
+    // The law's temperature falls with age, so what holds at both ends holds between them.
+    const [least, most] = [agesMyr.reduce(smaller), agesMyr.reduce(larger)];
+    const { ageMinMyr, ageMaxMyr } = BUILT_IN_LAW_RANGE;
+    if (least >= ageMinMyr && most <= ageMaxMyr) told = Float64Array.of(least, most);
+  }
+  return coolNodes(relation, band, massMjup, told, policy, starName).report;
+}
+
+const smaller = (a: number, b: number) => Math.min(a, b);
+const larger = (a: number, b: number) => Math.max(a, b);
+
 /** How a result names the relation. */
 export function coolingName(relation: CoolingRelation): string {
   return relation.kind === 'built-in' ? BUILT_IN_LAW_NAME : relation.table.name;

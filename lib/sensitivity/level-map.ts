@@ -1,7 +1,8 @@
+import { compiledKernels } from './kernels/compiled';
 import type { Kernels } from './kernels/kernels';
 import { plainKernels } from './kernels/plain';
 import { addLevelMeans, type CellRange, cellRange } from './level-means';
-import type { WeightBands } from './magnitude-weights';
+import { fillMagnitudeWeights, type WeightInputs, weightScratch } from './magnitude-weights';
 import { largestSeparation } from './orbits';
 import { type AddRow, lookedUpRows, phaseRows } from './row-adder';
 import { evenStep, type SeparationPhases, separationPhases } from './separation-phases';
@@ -11,9 +12,6 @@ import type { EccentricityLaw } from './types';
 
 /** Columns are worked on in blocks of so many. */
 const BLOCK = 8;
-
-/** Writes the rows of weights for a range of cells, see fillMagnitudeWeights. */
-type FillWeights = (range: CellRange, memory: Float64Array, at: number) => WeightBands;
 
 /** The block of memory with the table that lies in it. */
 interface Workspace {
@@ -26,7 +24,7 @@ interface Workspace {
 }
 
 const workspace: Workspace = {
-  kernels: plainKernels(),
+  kernels: compiledKernels() ?? plainKernels(),
   law: '',
   firstLogAxis: 0,
   axisStep: 0,
@@ -38,23 +36,21 @@ const workspace: Workspace = {
  * Completeness of one curve as a product, C = W · H: weights from age alone, rows from the curve.
  *
  * @param star prepared star with one curve
- * @param fillWeights see fillMagnitudeWeights
- * @param masses number of mass nodes
- * @param cellMag width of the cells of both, [mag]
+ * @param inputs of the weights
  * @param law eccentricity law
  * @param logAxis ln a of the grid, [ln au], not modified
  * @returns shape [mass, semiMajorAxis], row-major, not yet cut to 0…1
  */
 export function levelMap(
   star: PreparedStar,
-  fillWeights: FillWeights,
-  masses: number,
-  cellMag: number,
+  inputs: WeightInputs,
   law: EccentricityLaw,
   logAxis: Float64Array,
 ): Float64Array {
   const { kernels } = workspace;
   const columns = logAxis.length;
+  const { cellMag, begins } = inputs.paths;
+  const masses = begins.length - 1;
   const stride = BLOCK * Math.ceil(columns / BLOCK);
   const [curve] = star.curves;
   // A cell more at each end: places are rounded in two ways.
@@ -66,18 +62,20 @@ export function levelMap(
   const rows = workspace.phases?.planes.length ?? 0;
   // Row 0 is H below every cell; the cells follow, and what the cells below each gain.
   const below = rows + stride * (range.count + 1);
-  const factors = below + stride * range.count;
+  const spare = below + stride * range.count;
+  const scratch = spare + stride;
+  const factors = scratch + weightScratch(inputs, range.count);
   const out = factors + masses * (range.count + 1);
   const memory = kernels.reserve(out + (masses + 1) * stride);
   const firstColumn = phases ? firstReached(star, law, logAxis) : 0;
-  const places = { rows: rows + stride, stride, firstColumn };
-  memory.fill(0, rows, factors);
+  const places = { rows: rows + stride, stride, firstColumn, spare: 2 * range.count };
+  memory.fill(0, rows, scratch);
   const add: AddRow = phases
     ? phaseRows(kernels, phases, 0, places)
     : lookedUpRows(kernels, tabulatedRows(law, logAxis), columns, places);
   addLevelMeans(star, curve, cellMag, range, add);
   sumFromTop(memory, rows, below, range, stride);
-  const bands = fillWeights(range, memory, factors);
+  const bands = fillMagnitudeWeights(inputs, range, kernels, factors, scratch);
   for (let m = 0; m < masses; m += 2) {
     const next = Math.min(m + 1, masses - 1);
     const width = range.count + 1;
@@ -96,10 +94,8 @@ export function levelMap(
   const completeness = new Float64Array(masses * columns);
   for (let m = 0; m < masses; m++) {
     const from = out + m * stride;
-    completeness.set(
-      memory.subarray(from + firstColumn, from + columns),
-      m * columns + firstColumn,
-    );
+    const to = m * columns;
+    for (let j = firstColumn; j < columns; j++) completeness[to + j] = memory[from + j];
   }
   return completeness;
 }

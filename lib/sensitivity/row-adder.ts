@@ -28,6 +28,8 @@ export interface RowPlaces {
   stride: number;
   /** First column that can be reached at all; those before it stay 0. */
   firstColumn: number;
+  /** A row that nobody reads, to take from where no other is named. */
+  spare: number;
 }
 
 /** A factor below this moves no cell by more than 1e-12. */
@@ -42,7 +44,7 @@ export function phaseRows(
   kernels: Kernels,
   phases: SeparationPhases,
   table: number,
-  { rows, stride, firstColumn }: RowPlaces,
+  { rows, stride, firstColumn, spare }: RowPlaces,
 ): AddRow {
   const { firstLogAxis, axisStep, phases: count, step, top, beyond, width, planeSize } = phases;
   const width0 = stride - firstColumn;
@@ -56,14 +58,14 @@ export function phaseRows(
     const column = (node - phase) / count + beyond + firstColumn;
     if (column >= zeroAt) return;
     const to = rows + target * stride + firstColumn;
-    const from = source < 0 ? -1 : rows + source * stride + firstColumn;
+    const from = rows + (source < 0 ? spare : source) * stride + firstColumn;
     if (column < 0) {
       for (let j = 0; j < width0; j++) {
         const past = y - firstLogAxis - (firstColumn + j) * axisStep - top;
         const second = lastG2 + past * (lastG + 0.5 * past);
         const value = perF + perG * (lastG + past) + perG2 * second;
         memory[to + j] += value;
-        if (from >= 0) memory[from + j] -= value;
+        memory[from + j] -= value;
       }
       return;
     }
@@ -101,7 +103,7 @@ export function lookedUpRows(
   kernels: Kernels,
   fill: FillRow,
   columns: number,
-  { rows, stride }: RowPlaces,
+  { rows, stride, spare }: RowPlaces,
 ): AddRow {
   const row = newRow(columns);
   const memory = kernels.reserve(0);
@@ -110,11 +112,11 @@ export function lookedUpRows(
     if (isNothing) return;
     fill(y, row);
     const to = rows + target * stride;
-    const from = rows + source * stride;
+    const from = rows + (source < 0 ? spare : source) * stride;
     for (let j = 0; j < columns; j++) {
       const value = perF * row.cumulative[j] + perG * row.first[j] + perG2 * row.second[j];
       memory[to + j] += value;
-      if (source >= 0) memory[from + j] -= value;
+      memory[from + j] -= value;
     }
   };
 }

@@ -1,7 +1,7 @@
 import { distanceModulus } from '@/lib/quantities/magnitudes';
 import { ageNodes, type WeightedNodes } from './age';
 import { checkContrastCurve } from './contrast';
-import { coolNodes } from './cooling';
+import { coolingReport, coolNodes } from './cooling';
 import { distanceNodes } from './distance';
 import { effectiveCurve } from './effective-curve';
 import { ageUnder } from './field-age';
@@ -21,7 +21,10 @@ export interface PreparedCurve {
   limitMag: Float64Array;
   coverage: Float64Array;
   nSigma: number;
-  /** Absolute magnitudes in the curve's band, shape [mass, age]; Infinity is never detected. */
+  /**
+   * Absolute magnitudes in the curve's band, shape [mass, age]; Infinity is never detected. Empty
+   * where the star was prepared without them.
+   */
   magnitudes: Float64Array;
 }
 
@@ -43,6 +46,7 @@ export interface PreparedStar {
  * @param cooling relation
  * @param massMjup mass nodes, [M_Jup], not modified
  * @param settings rules
+ * @param needsMagnitudes whether the magnitudes at the age nodes are used
  * @throws RangeError for anything outside its domain, naming the star and the field
  */
 export function prepareStar(
@@ -50,6 +54,7 @@ export function prepareStar(
   cooling: CoolingRelation,
   massMjup: Float64Array,
   settings: SensitivitySettings,
+  needsMagnitudes = true,
 ): PreparedStar {
   const hostMags = apparentMags(star);
   const ages = ageNodes(ageUnder(star, settings), settings.threshold, settings.ageNodesPerSide);
@@ -61,7 +66,10 @@ export function prepareStar(
   const reports: CoolingReport[] = [];
   const curves = star.curves.map((curve, s) => {
     checkContrastCurve(curve, star.name);
-    const cooled = coolNodes(cooling, curve.band, massMjup, ages.values, settings, star.name);
+    const cool = [cooling, curve.band, massMjup, ages.values, settings, star.name] as const;
+    const cooled = needsMagnitudes
+      ? coolNodes(...cool)
+      : { magnitudes: new Float64Array(0), report: coolingReport(...cool) };
     reports.push(cooled.report);
     const effective = effectiveCurve(curve, star, settings);
     return prepareCurve(effective, hostMags[s] - extinctionMag, cooled.magnitudes);
@@ -115,6 +123,7 @@ function prepareCurve(
 
 /** Several bands of one star: a mass node counts once, an age node once. */
 function mergeReports(reports: CoolingReport[]): CoolingReport {
+  if (reports.length === 1) return reports[0];
   const flagged = new Set(reports.flatMap((report) => report.flaggedMassNodes));
   const largest = (pick: (report: CoolingReport) => number) => Math.max(...reports.map(pick));
   return {

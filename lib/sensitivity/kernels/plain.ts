@@ -4,6 +4,7 @@ import type { Kernels } from './kernels';
 export function plainKernels(): Kernels {
   let memory = new Float64Array(1 << 17);
   return {
+    name: 'plain',
     reserve: (doubles) => {
       if (doubles > memory.length) {
         const larger = new Float64Array(Math.ceil(doubles * 1.25));
@@ -19,7 +20,7 @@ export function plainKernels(): Kernels {
       for (let i = 0; i < count; i++) {
         const v = perDrop * m[slice + i] + perF * m[atF + i] + perG * m[atG + i];
         m[target + i] += v;
-        if (source >= 0) m[source + i] -= v;
+        m[source + i] -= v;
       }
     },
     addLongRow: (target, source, slice, plane, perDrop, perF, perG, perG2, count) => {
@@ -31,7 +32,14 @@ export function plainKernels(): Kernels {
         const v =
           perDrop * m[slice + i] + perF * m[atF + i] + perG * m[atG + i] + perG2 * m[atG2 + i];
         m[target + i] += v;
-        if (source >= 0) m[source + i] -= v;
+        m[source + i] -= v;
+      }
+    },
+    convolve: (out, weights, count, taps, tapCount) => {
+      const m = memory;
+      for (let i = 0; i < count; i++) {
+        const weight = m[weights + i];
+        for (let k = 0; k < tapCount; k++) m[out + i + k] += weight * m[taps + k];
       }
     },
     multiplyPair: (out, outNext, weights, weightsNext, rows, stride, first, end, count) => {
