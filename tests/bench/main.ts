@@ -9,7 +9,6 @@ import { mapLines } from './maps';
 import { numpyLines } from './numpy';
 import { numpyCommand } from './numpy-process';
 import { posteriorLines } from './posterior';
-import { freePosteriorLines } from './posterior-free';
 import { type Line, linesWithVerdicts, printTable } from './report';
 import { keptSum } from './rounds';
 import { SEED } from './survey';
@@ -20,7 +19,7 @@ type Group = (amount: Amount) => Line[] | Promise<Line[]>;
 /** Maps come first: their first pass has to be the first of the process. */
 const groups: Record<string, Group> = {
   maps: async (amount) => [...mapLines(amount), ...(await numpyLines(amount))],
-  posterior: (amount) => [...posteriorLines(amount), ...freePosteriorLines(amount)],
+  posterior: posteriorLines,
   live: liveLines,
   // Loaded when it is asked for: the others need no database.
   storage: async (amount) => (await import('./storage')).storageLines(amount),
@@ -28,7 +27,7 @@ const groups: Record<string, Group> = {
 };
 
 const NOTES = [
-  'Times: processor time of this process; of storage and of whole processes the clock on the wall.',
+  'Times: processor time, of the process that did the work; of storage the clock on the wall.',
   'Ratio: yardstick over product, round by round, median (min to max); for live the share of a',
   'frame, for wire the bytes, for storage product over yardstick.',
   'Errors of maps: four stars against a reference of this run with many ages and distances, summed',

@@ -130,6 +130,7 @@ def main():
     parser.add_argument('--survey', required=True)
     parser.add_argument('--maps-out')
     parser.add_argument('--serve', action='store_true')
+    parser.add_argument('--time', action='store_true')
     parser.add_argument('--draws', type=int, default=10_000)
     asked = parser.parse_args()
     survey = Survey(asked.survey, asked.draws)
@@ -137,6 +138,8 @@ def main():
         maps = [survey.map(star).astype('<f4') for star in range(len(survey.stars))]
         with open(asked.maps_out, 'wb') as file:
             np.save(file, np.stack(maps))
+    if asked.time:
+        print(1000 * time.process_time())
     if asked.serve:
         print(json.dumps({'numpy': np.__version__}), flush=True)
         for line in sys.stdin:

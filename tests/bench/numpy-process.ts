@@ -15,11 +15,15 @@ export function monteCarloScript(): string {
 }
 
 /** Runs a program to its end; what it writes on its standard error is shown. */
-export async function runToEnd(command: string, words: string[]): Promise<number> {
-  const child = spawn(command, words, { stdio: ['ignore', 'ignore', 'inherit'] });
-  const [code] = await once(child, 'exit');
+export async function runToEnd(command: string, words: string[]): Promise<string> {
+  const child = spawn(command, words, { stdio: ['ignore', 'pipe', 'inherit'] });
+  let output = '';
+  child.stdout.setEncoding('utf8').on('data', (chunk) => {
+    output += chunk;
+  });
+  const [code] = await once(child, 'close');
   if (code !== 0) throw new Error(`${command} ended with exit code ${code}`);
-  return 0;
+  return output;
 }
 
 /** A running Monte Carlo of one survey file, asked for some of its stars at a time. */

@@ -7,7 +7,7 @@ import { readNpy } from './npy';
 import { MonteCarloProcess, monteCarloScript, numpyCommand, runToEnd } from './numpy-process';
 import { mapErrors, referenceMap } from './reference';
 import type { Errors, Line, Target } from './report';
-import { compareTimed, millisecondsOf, wallMilliseconds } from './rounds';
+import { compareTimed, millisecondsOf } from './rounds';
 import { COOLING, GRID, inventStars, inventSurvey, settings } from './survey';
 import { writeSurvey } from './survey-file';
 
@@ -60,7 +60,7 @@ async function warmLines(command: string, folder: string, amount: Amount): Promi
         stars / YARDSTICK_STARS,
       );
       lines.push({
-        name: 'maps, smooth, warm',
+        name: 'maps, smooth, warm, beside NumPy',
         stars,
         rounds: compared.rounds,
         medianMs: compared.medianMs,
@@ -77,22 +77,19 @@ async function warmLines(command: string, folder: string, amount: Amount): Promi
   }
 }
 
-/** From the survey's JSON to its maps in a file, each a process of its own. */
+/** From the survey's JSON to its maps in a file, each a process of its own, its start included. */
 async function coldLine(command: string, folder: string, { rounds }: Amount): Promise<Line> {
   const surveyFile = path.join(folder, 'survey.json');
   const to = (name: string) => path.join(folder, name);
   writeFileSync(surveyFile, writeSurvey(inventSurvey(COLD_STARS, 'smooth')));
   const ownScript = path.join(path.dirname(process.argv[1]), 'survey-maps.js');
-  const asked = (script: string, out: string) => [
-    script,
-    '--survey',
-    surveyFile,
-    '--maps-out',
-    out,
-  ];
+  const timed = async (program: string, script: string, out: string) => {
+    const words = [script, '--survey', surveyFile, '--maps-out', out, '--time'];
+    return Number(await runToEnd(program, words));
+  };
   const compared = await compareTimed(
-    () => wallMilliseconds(() => runToEnd(process.execPath, asked(ownScript, to('own.npy')))),
-    () => wallMilliseconds(() => runToEnd(command, asked(monteCarloScript(), to('plain.npy')))),
+    () => timed(process.execPath, ownScript, to('own.npy')),
+    () => timed(command, monteCarloScript(), to('plain.npy')),
     rounds,
   );
   const [own, plain] = [mapsOfFile(to('own.npy')), mapsOfFile(to('plain.npy'))];

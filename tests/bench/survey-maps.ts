@@ -6,13 +6,19 @@ import { inventSurvey } from './survey';
 import { readSurvey, type Survey, writeSurvey } from './survey-file';
 
 const USAGE =
-  'Usage: npm run bench -- --survey FILE --maps-out FILE\n' +
+  'Usage: npm run bench -- --survey FILE --maps-out FILE [--time]\n' +
   '       npm run bench -- --survey-out FILE [--stars N] [--threshold smooth|hard] [--grid 100]';
 
 function* mapsOf({ stars, cooling, grid, settings }: Survey): Iterable<Float64Array> {
   for (const star of stars) {
     yield computeCompletenessMap(star, cooling, grid, settings).map.completeness;
   }
+}
+
+/** Since this process began. */
+function processorMilliseconds(): number {
+  const { user, system } = process.cpuUsage();
+  return (user + system) / 1000;
 }
 
 /** Writes the maps of a survey file, [star, mass, semi-major axis], or an invented survey. */
@@ -25,6 +31,7 @@ function main(): void {
       stars: { type: 'string', default: '78' },
       threshold: { type: 'string', default: 'smooth' },
       grid: { type: 'string' },
+      time: { type: 'boolean', default: false },
     },
   });
   const { survey: from, 'maps-out': to, 'survey-out': invented } = values;
@@ -38,6 +45,7 @@ function main(): void {
   const survey = readSurvey(readFileSync(from, 'utf8'));
   const { massMjup, semiMajorAxisAu } = survey.grid;
   writeNpy(to, [survey.stars.length, massMjup.length, semiMajorAxisAu.length], mapsOf(survey));
+  if (values.time) process.stdout.write(`${processorMilliseconds()}\n`);
 }
 
 try {
