@@ -33,10 +33,15 @@ export interface Panel {
   series: Float64Array;
 }
 
-/** Series tails below this share of the panel's largest coefficient count as resolved. */
-const RESOLVED = 1e-12;
-/** ln of the share of the whole below which a panel is not refined. */
-const NEGLIGIBLE = Math.log(1e-17);
+/** When a panel is good enough. */
+export interface Tolerance {
+  /** The last coefficients may have this share of the panel's largest. */
+  tail: number;
+  /** Panels and tails of a smaller share of the whole do not count. */
+  share: number;
+}
+
+const STRICT: Tolerance = { tail: 1e-12, share: 1e-17 };
 /** Sixteen units in the last place. */
 const ROUNDING = 16 * Number.EPSILON;
 /** Most panels beside those that the pieces themselves are. */
@@ -67,9 +72,14 @@ function evaluatePanel(stretches: Stretch[], stretch: number, start: number, wid
  *
  * @param logBest largest ln of reach times width over all panels
  */
-export function isResolved({ start, reach, width, series }: Panel, logBest: number): boolean {
+export function isResolved(
+  { start, reach, width, series }: Panel,
+  logBest: number,
+  { share, tail: allowed }: Tolerance = STRICT,
+): boolean {
   const logShare = reach + Math.log(width) - logBest;
-  if (!(logShare >= NEGLIGIBLE)) return true;
+  const negligible = Math.log(share);
+  if (!(logShare >= negligible)) return true;
   let largest = 0;
   for (let k = 0; k < NODES; k++) largest = Math.max(largest, Math.abs(series[k]));
   const tail = Math.max(
@@ -79,8 +89,8 @@ export function isResolved({ start, reach, width, series }: Panel, logBest: numb
   );
   // A short panel far from v = 0 has nodes rounded by this much of its width: no series beats that.
   const rounding = (ROUNDING * (start + width)) / width;
-  const isExhausted = tail <= Math.max(RESOLVED, rounding) * largest;
-  return isExhausted || Math.log(tail) + logShare < NEGLIGIBLE;
+  const isExhausted = tail <= Math.max(allowed, rounding) * largest;
+  return isExhausted || Math.log(tail) + logShare < negligible;
 }
 
 /** ln of reach times width of the panel that could carry most. */

@@ -33,6 +33,14 @@ export { detectionShape, logDetectionShapes } from './detection-shape';
 export type { BayesFactorWords, EvidenceSettings, PopulationEvidence } from './evidence';
 export { bayesFactorWords, populationEvidence } from './evidence';
 export { feldmanCousinsInterval } from './feldman-cousins';
+export type { Forecast, LimitByStars, StarGain } from './forecast';
+export {
+  addSample,
+  forecastSurvey,
+  limitByStars,
+  starGains,
+  starsLikeThese,
+} from './forecast';
 export type { FreeIndexPosterior, FreeIndexQuestion } from './free-indices';
 export { freeIndexPosterior } from './free-indices';
 export {
@@ -88,10 +96,20 @@ export {
   describeStars,
 } from './population-words';
 export { ratePosterior } from './posterior';
+export type { CountDistribution, Sample } from './prediction';
+export {
+  countInterval,
+  countQuantile,
+  countsAtRate,
+  negativeBinomial,
+  predictCounts,
+} from './prediction';
 export { priorFor } from './prior-for';
 export type { LimitingEnd, SettledIndices } from './settled-indices';
 export { freeIndices } from './settled-indices';
 export { withoutStars } from './star-selection';
+export type { WantedLimit } from './stars-needed';
+export { MOST_STARS, starsNeeded } from './stars-needed';
 export type { Condition, StatedInterval, Statement, StatementInputs } from './statement';
 export {
   describeLevel,

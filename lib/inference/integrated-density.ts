@@ -54,6 +54,9 @@ export interface IntegratedDensity {
   reweigh(logFactor: ArrayLike<number>): IntegratedDensity | null;
 }
 
+/** What a changed density may lose in panels that were made for another: 1e-9 of a limit. */
+const CHANGED: Tolerance = { tail: 1e-10, share: 1e-12 };
+
 const placeOf = (panel: Pick<Panel, 'start' | 'width'>, j: number) =>
   panel.start + 0.5 * panel.width * (1 + chebyshevNodes[j]);
 
@@ -154,7 +157,7 @@ function integratePanels(stretches: Stretch[], panels: Panel[]): IntegratedDensi
     reweigh(logFactor) {
       const changed = panels.map((panel, at) => multiplyPanel(panel, logFactor, at * NODES));
       const best = largestShare(changed);
-      const isWhole = changed.every((panel) => isResolved(panel, best));
+      const isWhole = changed.every((panel) => isResolved(panel, best, CHANGED));
       return isWhole ? integratePanels(stretches, changed) : null;
     },
     cumulative(x) {

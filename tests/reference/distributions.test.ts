@@ -1,3 +1,4 @@
+import { negativeBinomial } from '@/lib/inference';
 import { normalCumulative } from '@/lib/numerics/normal';
 import { betaQuantile, gammaP, gammaQuantile, logGamma } from '@/lib/numerics/special';
 import { runCheckFile } from './support/check-file';
@@ -12,6 +13,7 @@ runCheckFile('distributions', {
     'normal cdf': ({ values }) => values.map(normalCumulative),
     'poisson pmf': ({ mean, counts }) =>
       counts.map((k: number) => Math.exp(k * Math.log(mean) - mean - logGamma(k + 1))),
+    'predictive count': ({ posterior_shape, posterior_rate, planned_exposure, counts }) =>
+      negativeBinomial(posterior_shape, posterior_rate, planned_exposure, counts.length - 1),
   },
-  later: { 'predictive count': 'prediction for a planned exposure (10) comes with forecasts' },
 });
