@@ -83,16 +83,23 @@ function identify(bytes: Uint8Array, options: OpenOptions): Container | null {
 
 const isText = (container: Container) => ['csv', 'ecsv', 'votable', 'json'].includes(container);
 
-/** Undoes gzip, whatever is inside, within the limit on unpacked bytes. */
+const tooLarge = { code: 'ERR_BUFFER_TOO_LARGE' };
+
+/** Undoes gzip, whatever is inside, within the limit of an upload: more could not be read anyway. */
 export function gunzip(bytes: Uint8Array, faults: FaultReport): Uint8Array | null {
   if (bytes[0] !== 0x1f || bytes[1] !== 0x8b) return bytes;
+  const most = uploadLimits.uploadBytes;
   try {
-    return new Uint8Array(gunzipSync(bytes, { maxOutputLength: uploadLimits.unpackedBytes }));
+    // The last four bytes state the length; a file that lies about it is stopped at the limit.
+    const end = new DataView(bytes.buffer, bytes.byteOffset + Math.max(0, bytes.length - 4));
+    if (bytes.length > 18 && end.getUint32(0, true) > most) throw tooLarge;
+    return new Uint8Array(gunzipSync(bytes, { maxOutputLength: most }));
   } catch (error) {
-    const isLarge = (error as { code?: string }).code === 'ERR_BUFFER_TOO_LARGE';
+    const isLarge = error === tooLarge || (error as { code?: string }).code === tooLarge.code;
+    const words = `${most / 2 ** 20} MiB`;
     faults.add(
       isLarge
-        ? { code: 'too-large', message: 'unpacks to more than 2 GiB; expected at most 2 GiB' }
+        ? { code: 'too-large', message: `unpacks to more than ${words}; expected at most ${words}` }
         : { code: 'truncated', message: 'the gzip file is cut short or damaged' },
     );
     return null;

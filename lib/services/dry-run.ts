@@ -115,9 +115,11 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
   const read = await readOnThread(bytes, await contextOf(source));
   if (!read.ok) {
     const faults = read.faults.map((fault) => ({ file: source.fileName, ...fault }));
-    const status = faults.some((fault) => fault.code === 'too-large' && fault.line === undefined)
-      ? 413
-      : 422;
+    // A file that is too large as a whole; an array that is too large inside one has its place.
+    const isTooLarge = faults.some(
+      ({ code, line, item }) => code === 'too-large' && line === undefined && item === undefined,
+    );
+    const status = isTooLarge ? 413 : 422;
     throw new InputError(faults, { status, count: read.faultCount });
   }
   const plan = await planOf(actor, source, read);
