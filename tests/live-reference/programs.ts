@@ -13,7 +13,9 @@ const scriptOf = { R: 'reference.R', SciPy: 'reference.py' } as const;
 
 async function askProgram(program: Program, command: string, input: string): Promise<string> {
   const script = path.join(import.meta.dirname, scriptOf[program]);
-  const { code, output, stdout } = await run(command, [script], { input });
+  // Python would else leave its compiled modules beside the scripts.
+  const env = { ...process.env, PYTHONDONTWRITEBYTECODE: '1' };
+  const { code, output, stdout } = await run(command, [script], { input, env });
   if (code !== 0) throw new Error(`${program} ended with exit code ${code}:\n${output}`);
   return stdout;
 }
