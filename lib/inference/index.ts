@@ -13,6 +13,10 @@ export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation
 export { backgroundUpperLimit } from './background';
 export type { FrequentistCompanions, FrequentistRow } from './beside';
 export { frequentistBeside } from './beside';
+export type { CalibrationPart, CalibrationSetup } from './calibration';
+export { calibrationPart, RANK_DRAWS } from './calibration';
+export type { Calibration, Coverage } from './calibration-verdict';
+export { isAsPredicted, kolmogorovP, mergeCalibration } from './calibration-verdict';
 export { MOST_CANDIDATES } from './candidates';
 export type {
   CandidateTreatment,
@@ -32,6 +36,8 @@ export { displayRange, posteriorCurve } from './curve';
 export { detectionShape, logDetectionShapes } from './detection-shape';
 export type { BayesFactorWords, EvidenceSettings, PopulationEvidence } from './evidence';
 export { bayesFactorWords, populationEvidence } from './evidence';
+export type { CoverageAtRate, ExactCoverage } from './exact-coverage';
+export { coverageAtRates, exactCoverage } from './exact-coverage';
 export { feldmanCousinsInterval } from './feldman-cousins';
 export type { Forecast, LimitByStars, StarGain } from './forecast';
 export {

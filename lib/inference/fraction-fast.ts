@@ -1,0 +1,142 @@
+import { antiderivative, chebyshevNodes, coefficients, evaluateSeries, NODES } from './chebyshev';
+import type { CheckedQuestion } from './checked-question';
+import { logNoDetection } from './host-fraction';
+import type { PriorLaw } from './priors';
+import { NO_DATA, stretchesOf } from './product';
+
+/** ln density below its peak at which a panel no longer counts. */
+const NEGLIGIBLE = -45;
+
+/** Where the truth lies in the posterior of one invented survey, and the posterior's median. */
+export interface Placed {
+  /** Posterior probability below the truth. */
+  below: number;
+  median: number;
+}
+
+/** Panels of each piece of the support: fine enough for the narrowest posterior of so many stars. */
+function panelsFor(completeness: Float64Array): number {
+  const exposure = completeness.reduce((sum, c) => sum + c, 0);
+  return Math.min(256, Math.max(16, Math.ceil(2 * Math.sqrt(exposure) + 0.15 * exposure)));
+}
+
+/**
+ * Posteriors of the host fraction for many outcomes of one sample.
+ *
+ * What no outcome changes - prior, and the product of 1 - f C_j over all stars - is put on fixed
+ * places once, with a table of ln f - ln(1 - f C_j) per star; an outcome adds the rows of its stars.
+ *
+ * @param question completeness per star, prior; detections are not used
+ * @returns where a truth x lies given the stars with a detection; x in units of the largest fraction
+ * Accuracy: 1e-7 of the probability (compared with `ratePosterior` in the tests). Memory: one number
+ *   per star and place.
+ */
+export function fractionPlacer(
+  question: Pick<CheckedQuestion, 'completeness'>,
+  law: PriorLaw,
+): (detected: readonly number[], truth: number) => Placed {
+  const { completeness } = question;
+  const stretches = stretchesOf(law, NO_DATA);
+  const each = law.breaks === undefined ? panelsFor(completeness) : 1;
+  const count = stretches.length * each;
+  const size = count * NODES;
+  const base = new Float64Array(size);
+  const logX = new Float64Array(size);
+  const place = new Float64Array(size);
+  for (let panel = 0; panel < count; panel++) {
+    const stretch = stretches[Math.floor(panel / each)];
+    for (let j = 0; j < NODES; j++) {
+      const v = (positionOf(panel) + 0.5 * (1 + chebyshevNodes[j])) / each;
+      const i = panel * NODES + j;
+      const x = stretch.toX(v);
+      place[i] = x;
+      logX[i] = Math.log(x);
+      base[i] = stretch.logDensity(v) + logNoDetection(x, completeness);
+    }
+  }
+  const rows = new Map<number, Float64Array>();
+  const rowOf = (star: number) => {
+    const known = rows.get(star);
+    if (known) return known;
+    const c = completeness[star];
+    const row = place.map((x, i) => logX[i] - Math.log(1 - c * x));
+    rows.set(star, row);
+    return row;
+  };
+
+  /** Panels run upwards in x; those of a reversed piece downwards in v. */
+  function positionOf(panel: number): number {
+    const within = panel % each;
+    return stretches[Math.floor(panel / each)].isReversed ? each - 1 - within : within;
+  }
+
+  const logs = new Float64Array(size);
+  const values = new Float64Array(NODES);
+  const masses = new Float64Array(count);
+  const series: (Float64Array | null)[] = new Array(count).fill(null);
+
+  function integratePanel(panel: number, peak: number): number {
+    for (let j = 0; j < NODES; j++) values[j] = Math.exp(logs[panel * NODES + j] - peak);
+    const integral = antiderivative(coefficients(values), 0.5);
+    series[panel] = integral;
+    return Math.max(0, evaluateSeries(integral, 1));
+  }
+
+  function shareBelow(panel: number, x: number): number {
+    const at = Math.floor(panel / each);
+    const { toV, isReversed } = stretches[at];
+    const t = 2 * (toV(x) * each - positionOf(panel)) - 1;
+    const inside = evaluateSeries(series[panel] as Float64Array, Math.min(1, Math.max(-1, t)));
+    return isReversed ? masses[panel] - inside : inside;
+  }
+
+  function panelAt(x: number): number {
+    let at = 0;
+    while (at < stretches.length - 1 && x >= stretches[at].to) at++;
+    const within = Math.min(each - 1, Math.max(0, Math.floor(stretches[at].toV(x) * each)));
+    return at * each + (stretches[at].isReversed ? each - 1 - within : within);
+  }
+
+  function medianOf(total: number): number {
+    let before = 0;
+    let panel = 0;
+    while (panel < count - 1 && before + masses[panel] < 0.5 * total) before += masses[panel++];
+    const { toX, isReversed } = stretches[Math.floor(panel / each)];
+    const wanted = 0.5 * total - before;
+    let [low, high] = [-1, 1];
+    for (let step = 0; step < 40; step++) {
+      const t = 0.5 * (low + high);
+      const inside = evaluateSeries(series[panel] as Float64Array, t);
+      const isBelow = isReversed ? masses[panel] - inside > wanted : inside < wanted;
+      if (isBelow) low = t;
+      else high = t;
+    }
+    return toX((positionOf(panel) + 0.5 * (1 + low)) / each);
+  }
+
+  return (detected, truth) => {
+    logs.set(base);
+    for (const star of detected) {
+      const row = rowOf(star);
+      for (let i = 0; i < size; i++) logs[i] += row[i];
+    }
+    let peak = Number.NEGATIVE_INFINITY;
+    for (let i = 0; i < size; i++) if (logs[i] > peak) peak = logs[i];
+    let total = 0;
+    let below = 0;
+    const [low, top] = law.support;
+    const truthPanel = panelAt(truth);
+    for (let panel = 0; panel < count; panel++) {
+      let reach = Number.NEGATIVE_INFINITY;
+      for (let i = panel * NODES; i < (panel + 1) * NODES; i++) reach = Math.max(reach, logs[i]);
+      series[panel] = null;
+      masses[panel] = reach - peak > NEGLIGIBLE ? integratePanel(panel, peak) : 0;
+      if (panel < truthPanel) below += masses[panel];
+      total += masses[panel];
+    }
+    if (series[truthPanel] !== null && truth > low && truth < top) {
+      below += shareBelow(truthPanel, truth);
+    } else if (truth >= top) below = total;
+    return { below: Math.min(1, Math.max(0, below / total)), median: medianOf(total) };
+  };
+}
