@@ -26,7 +26,7 @@ const NICENESS = 10;
 
 async function main(): Promise<void> {
   os.setPriority(NICENESS);
-  const pool = openPool({ folder: path.join(__dirname, 'compute') });
+  const pool = openPool({ folder: path.join(__dirname, 'compute'), preload: 'complete-maps' });
   const shutdown = new AbortController();
   const workerIds = new Set<string>();
   const events = new EventEmitter() as WorkerEvents;

@@ -28,19 +28,23 @@ export interface ComputePool {
 
 interface PoolOptions {
   folder: string;
+  /** Task whose file a thread loads when it starts; the others are loaded when first run. */
+  preload?: string;
   threads?: number;
   taskLimitS?: number;
   memoryMb?: number;
 }
 
-/** Threads of this process; each loads a task's file when it first runs it, and stays warm. */
+/** Threads of this process; each loads a task's file when it first runs it or starts, and stays warm. */
 export function openPool({
   folder,
+  preload,
   threads = config().workerThreads ?? os.availableParallelism(),
   taskLimitS = TASK_LIMIT_S,
   memoryMb = THREAD_MEMORY_MB,
 }: PoolOptions): ComputePool {
   const piscina = new Piscina({
+    ...(preload && { filename: path.join(folder, `${preload}.js`) }),
     minThreads: 1,
     maxThreads: threads,
     idleTimeout: 60_000,

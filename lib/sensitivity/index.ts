@@ -60,3 +60,4 @@ export type {
 } from './types';
 export { unstableZone } from './unstable-zone';
 export { type StarChange, varyStar } from './vary';
+export { warmUpMaps } from './warm-up';

@@ -5,8 +5,12 @@ import {
   type MapGrid,
   type SensitivitySettings,
   type StarInputs,
+  warmUpMaps,
 } from '@/lib/sensitivity';
 import { moved } from '../transfer';
+
+// A thread loads this file when it starts, see the pool: the first survey then finds it warm.
+warmUpMaps();
 
 export interface CompleteMapsInput {
   stars: StarInputs[];

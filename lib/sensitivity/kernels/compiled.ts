@@ -38,7 +38,7 @@ function bytesOf(base64: string): Uint8Array {
 
 /** The kernels as compiled, on two doubles at a time; null where the machine has no such orders. */
 export function compiledKernels(): Kernels | null {
-  const wasm = (globalThis as { WebAssembly?: Wasm }).WebAssembly;
+  const wasm = (globalThis as unknown as { WebAssembly?: Wasm }).WebAssembly;
   const bytes = bytesOf(COMPILED_KERNELS);
   if (!wasm?.validate(bytes)) return null;
   const memory = new wasm.Memory({ initial: FIRST_PAGES });

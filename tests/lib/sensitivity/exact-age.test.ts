@@ -7,6 +7,7 @@ import {
   computeCompletenessMap,
   type MapGrid,
   simulateCompleteness,
+  warmUpMaps,
 } from '@/lib/sensitivity';
 import { ageSides, sideMoments } from '@/lib/sensitivity/age-sides';
 import { buildCurve, buildSettings, buildStar } from './build-star';
@@ -166,4 +167,12 @@ describe('ageSides(age)', () => {
       expect((out.area[2] - out.area[0]) / (2 * step)).toBeCloseTo(out.chance[1], 6);
     }
   });
+});
+
+test('warming up leaves no trace in the numbers', () => {
+  const [, star] = stars[0];
+  const map = () => computeCompletenessMap(star, builtIn, grid, buildSettings()).map.completeness;
+  const before = map();
+  expect(warmUpMaps()).toBeGreaterThan(0);
+  expect(map()).toEqual(before);
 });
