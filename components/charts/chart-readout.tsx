@@ -123,7 +123,7 @@ export function stepTo(
 }
 
 /** The numbers beside the pointer, on the side where there is room. */
-function ReadoutNote({
+export function ReadoutNote({
   frame,
   x,
   y,

@@ -7,6 +7,7 @@ import { limitMapInWords } from './limit-map/limit-map-words';
 import { overlapRulesInWords } from './overlap-rules/overlap-words';
 import { comparisonInWords } from './population-comparison/comparison-words';
 import { sweepInWords } from './sweep/sweep-words';
+import { systematicsInWords } from './systematics/systematics-words';
 
 const AnswerWaits = () => (
   <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
@@ -23,6 +24,18 @@ const whileForm = { loading: FormWaits };
 
 /** Each kind brings its form, its answer and its numbers; a page loads those of one kind. */
 export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
+  systematics: {
+    Form: dynamic(
+      async () => (await import('./systematics/systematics-form')).SystematicsForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./systematics/systematics-answer')).SystematicsAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: systematicsInWords,
+    loadTables: async () => (await import('./systematics/systematics-tables')).systematicsTables,
+  },
   'limit-map': {
     Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, whileForm),
     Answer: dynamic(
