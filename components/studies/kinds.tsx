@@ -2,6 +2,7 @@ import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { countsInWords } from './counts/counts-words';
 import { freeIndicesInWords } from './free-indices/free-indices-words';
+import { influenceInWords } from './influence/influence-words';
 import type { KindEntry } from './kind-entry';
 import { limitMapInWords } from './limit-map/limit-map-words';
 import { overlapRulesInWords } from './overlap-rules/overlap-words';
@@ -35,6 +36,18 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     ),
     settingsInWords: systematicsInWords,
     loadTables: async () => (await import('./systematics/systematics-tables')).systematicsTables,
+  },
+  influence: {
+    Form: dynamic(
+      async () => (await import('./influence/influence-form')).InfluenceForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./influence/influence-answer')).InfluenceAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: influenceInWords,
+    loadTables: async () => (await import('./influence/influence-tables')).influenceTables,
   },
   'limit-map': {
     Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, whileForm),
