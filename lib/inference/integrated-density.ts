@@ -13,6 +13,7 @@ import {
   type Panel,
   resolvePanels,
   type Stretch,
+  type Tolerance,
 } from './density-panels';
 
 export type { Stretch };

@@ -1,4 +1,4 @@
-import { limitMap, sweepIndices, sweepLimits, tailLimits } from '@/lib/inference';
+import { limitMap, starInfluence, sweepIndices, sweepLimits, tailLimits } from '@/lib/inference';
 import { runCheckFile } from './support/check-file';
 import { checkedPopulation, type PopulationInputs } from './support/check-populations';
 import { publishedSum, surveyGrid } from './support/check-survey';
@@ -34,6 +34,22 @@ runCheckFile('survey-summaries', {
   runners: {
     'limit map per cell': (inputs: FlatInputs) =>
       rowsOf(limitMap(asked(inputs)).limit, surveyGrid.semiMajorAxisAu.length),
+    'leave-one-out limits': ({ max, level, completeness_per_star }) => {
+      const { limit, without } = starInfluence(
+        {
+          likelihood: 'mean-number',
+          completeness: Float64Array.from(completeness_per_star as number[]),
+          detectedStars: [],
+          prior: { law: 'uniform', max },
+        },
+        level,
+      );
+      return {
+        all: limit,
+        without_star: without.map((one) => one?.limit),
+        relative_change: without.map((one) => one?.relativeChange),
+      };
+    },
     'tail-cumulative limits': (inputs: FlatInputs & { corners_mjup_au: [number, number][] }) =>
       inputs.corners_mjup_au.map(
         ([mass, axis]) =>
@@ -50,7 +66,6 @@ runCheckFile('survey-summaries', {
     },
   },
   later: {
-    'leave-one-out limits': 'influence of single stars (10) comes with its own suite',
     systematics: 'varied stars (10) come with the systematics',
   },
 });

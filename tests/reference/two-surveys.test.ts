@@ -1,4 +1,11 @@
 import {
+  type RateQuestion,
+  ratePosterior,
+  surveyInfluence,
+  upperLimit,
+  viewPopulation,
+} from '@/lib/inference';
+import {
   type CompletenessMap,
   combineDeepest,
   combineIndependent,
@@ -13,6 +20,7 @@ import {
   sensitivitySettings,
   starInputs,
 } from './support/check-inputs';
+import { checkedPopulation, type PopulationInputs } from './support/check-populations';
 
 type Entry = StarCheckInputs & { curve: string; offset_mag: number };
 
@@ -21,11 +29,13 @@ interface TwoSurveys {
   axes_au: number[];
   curves: Record<string, CurveInputs>;
   surveys: { name: string; stars: Entry[] }[];
+  population: PopulationInputs;
   option: { rule: 'hard' | 'smooth'; n_sigma: number; eccentricity: LawInputs };
 }
 
 const setup = readChecks('two-surveys')[0].inputs as unknown as TwoSurveys;
 
+const population = checkedPopulation(setup.population);
 const entries = setup.surveys.flatMap((survey) => survey.stars);
 const entriesOf = (name: string) => entries.filter((entry) => entry.name === name);
 const curveOf = (entry: Entry) =>
@@ -54,6 +64,51 @@ function rows(map: CompletenessMap): number[][] {
 
 const oneByOne = (star: string) => entriesOf(star).map((entry) => mapOf([entry]));
 
+interface FlatInputs {
+  max: number;
+  level: number;
+}
+
+const starNames = [...new Set(entries.map((entry) => entry.name))];
+const isAny = () => true;
+const isOf = (survey: string) => {
+  const own = new Set(setup.surveys.find(({ name }) => name === survey)?.stars);
+  return (entry: Entry) => own.has(entry);
+};
+
+/** One map a star, from the entries that are kept. */
+function mapsOf(
+  isKept: (entry: Entry) => boolean,
+  combine: (maps: CompletenessMap[]) => CompletenessMap,
+): CompletenessMap[] {
+  return starNames.flatMap((name) => {
+    const maps = entriesOf(name)
+      .filter(isKept)
+      .map((entry) => mapOf([entry]));
+    if (maps.length === 0) return [];
+    return maps.length === 1 ? maps : combine(maps);
+  });
+}
+
+function questionOf(maps: CompletenessMap[], { max }: FlatInputs): RateQuestion {
+  const stacked = Float64Array.from(maps.flatMap(({ completeness }) => Array.from(completeness)));
+  const { completenessPerStar } = viewPopulation(stacked, maps[0], population);
+  return {
+    likelihood: 'mean-number',
+    completeness: completenessPerStar as Float64Array,
+    detectedStars: [],
+    prior: { law: 'uniform', max },
+  };
+}
+
+function limitOf(maps: CompletenessMap[], inputs: FlatInputs) {
+  const posterior = ratePosterior(questionOf(maps, inputs));
+  return {
+    exposure: posterior.exposure,
+    upper_limit_95: upperLimit(posterior, inputs.level),
+  };
+}
+
 runCheckFile('two-surveys', {
   runners: {
     setup: () => {
@@ -66,10 +121,43 @@ runCheckFile('two-surveys', {
     },
     'map independent': ({ star }) => rows(combineIndependent(oneByOne(star))),
     'map deepest': ({ star }) => rows(combineDeepest(oneByOne(star))),
+    'exposures and limits by rule': (inputs: FlatInputs) => ({
+      'only first': limitOf(mapsOf(isOf('first'), combineIndependent), inputs),
+      'only second': limitOf(mapsOf(isOf('second'), combineIndependent), inputs),
+      independent: limitOf(mapsOf(isAny, combineIndependent), inputs),
+      deepest: limitOf(mapsOf(isAny, combineDeepest), inputs),
+      'same position': limitOf(
+        starNames.map((name) => mapOf(entriesOf(name))),
+        inputs,
+      ),
+      'stars counted twice (wrong)': limitOf(
+        entries.map((entry) => mapOf([entry])),
+        inputs,
+      ),
+    }),
+    'leave one survey out': (inputs: FlatInputs) => {
+      const without = (name: string) => {
+        const left = (entry: Entry) => !isOf(name)(entry);
+        const question = questionOf(mapsOf(isAny, combineIndependent), inputs);
+        const rest = new Map(
+          starNames
+            .filter((star) => entriesOf(star).some(left))
+            .map((star, i) => [star, i] as const),
+        );
+        const seen = questionOf(mapsOf(left, combineIndependent), inputs).completeness;
+        const completenessWithout = Float64Array.from(starNames, (star) => {
+          const place = rest.get(star);
+          return place === undefined ? 0 : seen[place];
+        });
+        const [survey] = surveyInfluence(
+          question,
+          [{ name, completenessWithout, detectedWithout: [] }],
+          inputs.level,
+        );
+        return { exposure: survey.without?.exposure, upper_limit_95: survey.without?.limit };
+      };
+      return { 'without first': without('first'), 'without second': without('second') };
+    },
     'map same position': ({ star }) => rows(mapOf(entriesOf(star))),
-  },
-  later: {
-    'exposures and limits by rule': 'combining surveys in an analysis comes with another part',
-    'leave one survey out': 'influence of a survey comes with another part',
   },
 });
