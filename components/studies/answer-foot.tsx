@@ -3,6 +3,7 @@ import { Conditions } from '@/components/ui/plate';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { StudyView } from '@/lib/schemas/studies';
+import { FormulaWords } from './formula-words';
 import type { AskedRun } from './kind-entry';
 
 /** The run's own sentence and conditions: no limit is shown without them. */
@@ -10,7 +11,7 @@ export function AnswerConditions({ asked, settings }: { asked: AskedRun; setting
   const { statement } = asked.result;
   const rows = statement.conditions.map((condition) => {
     const at = condition.indexOf(': ');
-    return { name: condition.slice(0, at), value: condition.slice(at + 2) };
+    return { name: condition.slice(0, at), value: <FormulaWords text={condition.slice(at + 2)} /> };
   });
   return (
     <section>

@@ -20,90 +20,91 @@ const FormWaits = () => (
     Opening the settings
   </p>
 );
-const whileAnswer = { loading: AnswerWaits };
-const whileForm = { loading: FormWaits };
 
 /** Each kind brings its form, its answer and its numbers; a page loads those of one kind. */
 export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
   systematics: {
-    Form: dynamic(
-      async () => (await import('./systematics/systematics-form')).SystematicsForm,
-      whileForm,
-    ),
+    Form: dynamic(async () => (await import('./systematics/systematics-form')).SystematicsForm, {
+      loading: FormWaits,
+    }),
     Answer: dynamic(
       async () => (await import('./systematics/systematics-answer')).SystematicsAnswer,
-      whileAnswer,
+      { loading: AnswerWaits },
     ),
     settingsInWords: systematicsInWords,
     loadTables: async () => (await import('./systematics/systematics-tables')).systematicsTables,
   },
   influence: {
-    Form: dynamic(
-      async () => (await import('./influence/influence-form')).InfluenceForm,
-      whileForm,
-    ),
-    Answer: dynamic(
-      async () => (await import('./influence/influence-answer')).InfluenceAnswer,
-      whileAnswer,
-    ),
+    Form: dynamic(async () => (await import('./influence/influence-form')).InfluenceForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./influence/influence-answer')).InfluenceAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: influenceInWords,
     loadTables: async () => (await import('./influence/influence-tables')).influenceTables,
   },
   'limit-map': {
-    Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, whileForm),
-    Answer: dynamic(
-      async () => (await import('./limit-map/limit-map-answer')).LimitMapAnswer,
-      whileAnswer,
-    ),
+    Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./limit-map/limit-map-answer')).LimitMapAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: limitMapInWords,
     loadTables: async () => (await import('./limit-map/limit-map-tables')).limitMapTables,
   },
   sweep: {
-    Form: dynamic(async () => (await import('./sweep/sweep-form')).SweepForm, whileForm),
-    Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer, whileAnswer),
+    Form: dynamic(async () => (await import('./sweep/sweep-form')).SweepForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: sweepInWords,
     loadTables: async () => (await import('./sweep/sweep-tables')).sweepTables,
   },
   'free-indices': {
-    Form: dynamic(
-      async () => (await import('./free-indices/free-indices-form')).FreeIndicesForm,
-      whileForm,
-    ),
+    Form: dynamic(async () => (await import('./free-indices/free-indices-form')).FreeIndicesForm, {
+      loading: FormWaits,
+    }),
     Answer: dynamic(
       async () => (await import('./free-indices/free-indices-answer')).FreeIndicesAnswer,
-      whileAnswer,
+      { loading: AnswerWaits },
     ),
     settingsInWords: freeIndicesInWords,
     loadTables: async () => (await import('./free-indices/free-indices-tables')).freeIndicesTables,
   },
   'overlap-rules': {
-    Form: dynamic(
-      async () => (await import('./overlap-rules/overlap-form')).OverlapForm,
-      whileForm,
-    ),
-    Answer: dynamic(
-      async () => (await import('./overlap-rules/overlap-answer')).OverlapAnswer,
-      whileAnswer,
-    ),
+    Form: dynamic(async () => (await import('./overlap-rules/overlap-form')).OverlapForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./overlap-rules/overlap-answer')).OverlapAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: overlapRulesInWords,
     loadTables: async () => (await import('./overlap-rules/overlap-tables')).overlapTables,
   },
   'population-comparison': {
     Form: dynamic(
       async () => (await import('./population-comparison/comparison-form')).ComparisonForm,
-      whileForm,
+      { loading: FormWaits },
     ),
     Answer: dynamic(
       async () => (await import('./population-comparison/comparison-answer')).ComparisonAnswer,
-      whileAnswer,
+      { loading: AnswerWaits },
     ),
     settingsInWords: comparisonInWords,
     loadTables: async () =>
       (await import('./population-comparison/comparison-tables')).comparisonTables,
   },
   counts: {
-    Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, whileForm),
-    Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer, whileAnswer),
+    Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: countsInWords,
     loadTables: async () => (await import('./counts/counts-tables')).countsTables,
   },

@@ -6,6 +6,7 @@ import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
+import { FormulaWords } from '../formula-words';
 import type { AnswerProps } from '../kind-entry';
 import { evidenceInWords, evidenceSource, evidenceSteps } from './comparison-words';
 
@@ -47,7 +48,9 @@ export function ComparisonAnswer({ asked, result }: AnswerProps<'population-comp
                     {row.key} {row.name}
                   </Link>
                   , version {row.version}
-                  <span className="block font-normal text-chart text-ink3">{row.words}</span>
+                  <span className="block font-normal text-chart text-ink3">
+                    <FormulaWords text={row.words} />
+                  </span>
                 </Cell>
                 <Cell isNumeric>
                   {row.logBayesFactor === null ? '–' : formatLogB(row.logBayesFactor)}
