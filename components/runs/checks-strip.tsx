@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { StateMark } from '@/components/ui/state-mark';
 import { formatPercent } from '@/lib/quantities/display';
 import type { RunInputs } from '@/lib/schemas/runs';
@@ -10,6 +11,8 @@ interface ChecksStripProps {
   undecidedInside: string[];
   /** Set while the setting is another: what was judged for the run's own ranges says so. */
   ofRun?: number;
+  /** Whether the run is calibrated. */
+  calibration: ReactNode;
 }
 
 /** What a reader should know before the number is used, in one line. */
@@ -20,6 +23,7 @@ export function ChecksStrip(props: ChecksStripProps) {
   const overlapping = entries - inputs.stars.length;
   return (
     <div className="flex flex-wrap gap-x-[30px] gap-y-2 px-0.5 pt-3.5 pb-[26px]">
+      {props.calibration}
       <StateMark kind="ok">
         {overlapping > 0
           ? `${entries} entries, ${inputs.stars.length} stars: no star counted twice`

@@ -5,6 +5,7 @@ import { PosteriorChart, type PosteriorView } from '@/components/charts/posterio
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
 import { FurtherQuestions } from '@/components/studies/further-questions';
 import { FoldSection } from '@/components/ui/fold-section';
 import { FootBar } from '@/components/ui/foot-bar';
@@ -118,6 +119,14 @@ export function ResultBody(props: ResultBodyProps) {
           .filter((candidate) => candidate.insideRanges !== false)
           .map(({ name }) => name)}
         ofRun={shown.isLive ? run.number : undefined}
+        calibration={
+          <CalibrationCheck
+            collaboration={collaboration}
+            analysisKey={run.analysis.key}
+            runId={run.id}
+            ofRun={shown.isLive ? run.number : undefined}
+          />
+        }
       />
       <ResultSections
         inputs={inputs}

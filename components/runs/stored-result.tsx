@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startRun } from '@/components/hooks/use-runs';
+import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -70,10 +71,19 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
         )}
       </div>
       {run?.result ? (
-        <Plate>
-          <p className="statement mb-5">{run.result.statement.sentence}</p>
-          <Conditions rows={run.result.statement.conditions.map(asRow)} />
-        </Plate>
+        <>
+          <Plate>
+            <p className="statement mb-5">{run.result.statement.sentence}</p>
+            <Conditions rows={run.result.statement.conditions.map(asRow)} />
+          </Plate>
+          <div className="px-0.5 pt-3.5">
+            <CalibrationCheck
+              collaboration={collaboration}
+              analysisKey={analysis.key}
+              runId={run.id}
+            />
+          </div>
+        </>
       ) : (
         <NoRunPlate
           collaboration={collaboration}

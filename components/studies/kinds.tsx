@@ -1,5 +1,6 @@
 import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { calibrationInWords } from './calibration/calibration-words';
 import { countsInWords } from './counts/counts-words';
 import { freeIndicesInWords } from './free-indices/free-indices-words';
 import { influenceInWords } from './influence/influence-words';
@@ -107,6 +108,18 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     }),
     settingsInWords: countsInWords,
     loadTables: async () => (await import('./counts/counts-tables')).countsTables,
+  },
+  calibration: {
+    Form: dynamic(
+      async () => (await import('./calibration/calibration-form')).CalibrationForm,
+      whileForm,
+    ),
+    Answer: dynamic(
+      async () => (await import('./calibration/calibration-answer')).CalibrationAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: calibrationInWords,
+    loadTables: async () => (await import('./calibration/calibration-tables')).calibrationTables,
   },
 };
 
