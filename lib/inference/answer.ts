@@ -8,8 +8,14 @@ import {
   sampleCompleteness,
 } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
-import type { Likelihood, RatePosterior, RatePrior } from './contract';
+import type { Likelihood, RatePosterior, RatePrior, RateQuestion } from './contract';
 import { isSetByPrior, upperLimit } from './intervals';
+import {
+  type CountedCandidate,
+  candidateTreatment,
+  countCandidates,
+  type OpenCandidates,
+} from './open-candidates';
 import { ratePosterior } from './posterior';
 
 /** A companion found: the star that it belongs to and its best mass and semi-major axis. */
@@ -44,6 +50,10 @@ export interface AnswerSettings {
   prior: RatePrior;
   /** Vetted companions to be counted where they lie in the population's ranges. */
   detections: readonly Detection[];
+  /** Candidates without an answer; left out or null: set aside. */
+  candidates?: OpenCandidates | null;
+  /** b, expected number of false detections among those counted; left out: none. */
+  background?: number;
   /** Credible level of the limit [fraction], 0..1. */
   level: number;
 }
@@ -82,6 +92,10 @@ export interface PopulationView {
 export interface Answer extends PopulationView {
   counted: Detection[];
   setAside: DetectionSetAside[];
+  /** Candidates without an answer that count with their probability. */
+  undecided: CountedCandidate[];
+  /** What the posterior answers. */
+  question: RateQuestion;
   posterior: RatePosterior;
   level: number;
   limit: number;
@@ -193,7 +207,10 @@ export function countDetections(
   return { counted, setAside };
 }
 
-function checkDetected(counted: Detection[], completeness: Float64Array): void {
+function checkDetected(
+  counted: readonly { name: string; star: number }[],
+  completeness: Float64Array,
+): void {
   for (const { name, star } of counted) {
     if (!(star in completeness)) {
       throw new RangeError(`${name} belongs to star ${star}, which the sample does not hold`);
@@ -210,31 +227,38 @@ function checkDetected(counted: Detection[], completeness: Float64Array): void {
 /**
  * Posterior and limit from a view that is already there: prior, detections and level may change.
  *
- * @throws RangeError as `answerQuestion`
+ * @throws RangeError as `answerQuestion` and `countCandidates`
  */
 export function answerFromView(view: PopulationView, settings: AnswerSettings): Answer {
-  const { likelihood, prior, detections, level } = settings;
+  const { likelihood, prior, detections, level, background } = settings;
   const { population, hostMassMsun, rateScale } = view;
   const { counted, setAside } = countDetections(detections, population, likelihood, hostMassMsun);
+  const undecided = countCandidates(settings.candidates?.open ?? [], population, hostMassMsun);
   const { completeness, exposure } = seenBy(view, likelihood);
   if (likelihood === 'host-fraction') {
     if (completeness === null) {
       throw new RangeError("the host fraction needs each star's map, not only their sum");
     }
-    checkDetected(counted, completeness);
+    checkDetected([...counted, ...undecided], completeness);
   }
-  const posterior = ratePosterior({
+  const candidates = candidateTreatment(settings.candidates, undecided);
+  const question: RateQuestion = {
     likelihood,
     completeness: completeness ?? Float64Array.of(exposure),
     detectedStars: counted.map(({ star }) => star),
     prior,
     ...(rateScale !== null && { rateScale }),
-  });
+    ...(background !== undefined && { background }),
+    ...(candidates !== undefined && { candidates }),
+  };
+  const posterior = ratePosterior(question);
   return {
     ...view,
     exposure,
     counted,
     setAside,
+    undecided,
+    question,
     posterior,
     level,
     limit: upperLimit(posterior, level),

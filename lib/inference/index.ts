@@ -89,6 +89,18 @@ export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
 export type { LimitMap, LimitMapQuestion } from './limit-map';
 export { limitMap, sumMaps } from './limit-map';
 export type { CompanionMeasurement, Measured, MeasuredDetection } from './measured-places';
+export type {
+  CountedCandidate,
+  OpenCandidate,
+  OpenCandidates,
+  StatedCandidates,
+} from './open-candidates';
+export {
+  candidateTreatment,
+  countCandidates,
+  describeBackground,
+  describeCandidates,
+} from './open-candidates';
 export type { OverlapBracket } from './overlap-bracket';
 export { overlapBracket } from './overlap-bracket';
 export type { ComparedPopulation, PopulationComparison } from './population-comparison';
@@ -110,7 +122,8 @@ export {
   negativeBinomial,
   predictCounts,
 } from './prediction';
-export { priorFor } from './prior-for';
+export type { AskedColumns } from './prior-for';
+export { priorFor, whyNoColumn } from './prior-for';
 export type { LimitingEnd, SettledIndices } from './settled-indices';
 export { freeIndices } from './settled-indices';
 export { withoutStars } from './star-selection';

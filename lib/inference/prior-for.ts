@@ -1,4 +1,5 @@
-import type { Likelihood, RatePrior } from './contract';
+import { MOST_CANDIDATES } from './candidates';
+import type { Likelihood, RatePrior, RateQuestion } from './contract';
 
 /**
  * The same prior for the other quantity, for the table that shows both: cut at 1 for a fraction.
@@ -22,4 +23,41 @@ export function priorFor(prior: RatePrior, likelihood: Likelihood): RatePrior | 
     case 'tabulated':
       return prior.value[prior.value.length - 1] <= 1 ? prior : null;
   }
+}
+
+/** What decides whether a question has an answer of either quantity. */
+export type AskedColumns = Pick<
+  RateQuestion,
+  'prior' | 'background' | 'candidates' | 'detectedStars' | 'rateScale'
+>;
+
+/** Why a fraction of stars cannot be asked beside a mean number; null where it can. */
+function whyNoFraction({ background, candidates, detectedStars, rateScale }: AskedColumns) {
+  if (background !== undefined && background > 0) {
+    return 'a known background belongs to the mean number';
+  }
+  if (candidates?.treatment === 'rate-dependent') {
+    const top = 1 / Math.max(1, ...(rateScale ?? []));
+    return candidates.referenceRate < top
+      ? null
+      : 'the rate that the candidates were quoted for is no fraction of stars';
+  }
+  const open = candidates?.entries.filter(
+    ({ star, probability }) => probability > 0 && probability < 1 && !detectedStars.includes(star),
+  );
+  return new Set(open?.map(({ star }) => star)).size > MOST_CANDIDATES
+    ? `a fraction of stars weighs at most ${MOST_CANDIDATES} candidates`
+    : null;
+}
+
+/**
+ * Why the table of limits has no column for a likelihood, in words; null where it has one.
+ *
+ * @param asked with the prior as it was chosen, for whichever quantity
+ */
+export function whyNoColumn(asked: AskedColumns, likelihood: Likelihood): string | null {
+  if (priorFor(asked.prior, likelihood) === null) {
+    return 'the prior has no counterpart for it';
+  }
+  return likelihood === 'host-fraction' ? whyNoFraction(asked) : null;
 }

@@ -10,6 +10,7 @@ import {
   THIN_SPACE,
 } from '@/lib/quantities/display';
 import type { RatePrior } from './contract';
+import { describeBackground, describeCandidates, type StatedCandidates } from './open-candidates';
 import {
   describePlanet,
   describePlanets,
@@ -43,6 +44,10 @@ export interface StatementInputs {
   interval?: StatedInterval;
   /** Where the prior of f ends because the rate scales with the host's mass; null or left out: nowhere. */
   cutAt?: number | null;
+  /** Candidates without an answer; left out: there are none, or they are not known. */
+  candidates?: StatedCandidates;
+  /** b, expected number of false detections among those counted. */
+  background?: number | null;
 }
 
 /** An interval quoted beside the limit once something was detected. */
@@ -152,6 +157,16 @@ function describeSetByPrior(inputs: StatementInputs): string {
   );
 }
 
+/** What stands beside the detections: candidates without an answer, and a known background. */
+function companionConditions({ candidates, background }: StatementInputs): Condition[] {
+  const entries: Condition[] = [];
+  if (candidates !== undefined) {
+    entries.push({ label: 'Candidates', text: describeCandidates(candidates) });
+  }
+  if (background) entries.push({ label: 'Background', text: describeBackground(background) });
+  return entries;
+}
+
 function listConditions(inputs: StatementInputs): Condition[] {
   const { quantity, stars, detections } = inputs;
   const likelihood =
@@ -166,6 +181,7 @@ function listConditions(inputs: StatementInputs): Condition[] {
     ...populationConditions(inputs.population, quantity === 'host_fraction', inputs.cutAt ?? null),
     { label: 'Likelihood', text: likelihood },
     { label: 'Detections', text: found },
+    ...companionConditions(inputs),
     {
       label: 'Exposure',
       text: `${formatSignificant(inputs.exposure, 3)} of ${stars} stars, the sum of mean detection probabilities`,

@@ -1,7 +1,10 @@
 import {
+  candidateTreatment,
+  countCandidates,
   countDetections,
   isSetByPrior,
   type Likelihood,
+  type OpenCandidates,
   type PopulationView,
   type RatePosterior,
   type RatePrior,
@@ -12,18 +15,8 @@ import {
 } from '@/lib/inference';
 import { seenBy } from '@/lib/inference/answer';
 import type { MeasuredDetection } from '@/lib/inference/measured-places';
-import { isInside, type Population } from '@/lib/population';
+import type { Population } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
-
-/** A companion that nobody settled, with its probability of being real. */
-export interface OpenCandidate {
-  name: string;
-  /** Index of its star. */
-  star: number;
-  probability: number;
-  massMjup: number;
-  semiMajorAxisAu: number;
-}
 
 /** A finished run's question with everything that it is answered from; it can go to a thread. */
 export interface RunQuestion {
@@ -39,10 +32,7 @@ export interface RunQuestion {
   level: number;
   /** Confirmed companions that count where they lie in the population's ranges. */
   detections: MeasuredDetection[];
-  candidates:
-    | { treatment: 'fixed'; open: OpenCandidate[] }
-    | { treatment: 'rate-dependent'; referenceRate: number; open: OpenCandidate[] }
-    | null;
+  candidates: OpenCandidates | null;
   /** Expected false detections among those counted; null: none. */
   background: number | null;
 }
@@ -60,7 +50,11 @@ export interface RunAnswer {
   isSetByPrior: boolean;
 }
 
-/** The mean completeness of a question's stars with the companions that count, before any prior. */
+/**
+ * The mean completeness of a question's stars with the companions that count, before any prior.
+ *
+ * @throws RangeError as `viewPopulation` and `countCandidates`
+ */
 export function rateQuestionOf(question: RunQuestion): {
   view: PopulationView;
   completeness: Float64Array;
@@ -73,7 +67,8 @@ export function rateQuestionOf(question: RunQuestion): {
   const seen = seenBy(view, likelihood);
   const completeness = seen.completeness as Float64Array;
   const { counted } = countDetections(question.detections, population, likelihood, hostMassMsun);
-  const candidates = countCandidates(question);
+  const undecided = countCandidates(question.candidates?.open ?? [], population, hostMassMsun);
+  const candidates = candidateTreatment(question.candidates, undecided);
   return {
     view,
     completeness,
@@ -89,18 +84,6 @@ export function rateQuestionOf(question: RunQuestion): {
       ...(candidates !== undefined && { candidates }),
     },
   };
-}
-
-function countCandidates(question: RunQuestion): RateQuestion['candidates'] {
-  const { candidates, population, hostMassMsun } = question;
-  if (candidates === null) return undefined;
-  const { open, ...treatment } = candidates;
-  const entries = open
-    .filter(({ massMjup, semiMajorAxisAu, star }) =>
-      isInside(population, massMjup, semiMajorAxisAu, hostMassMsun[star]),
-    )
-    .map(({ star, probability }) => ({ star, probability }));
-  return entries.length === 0 ? undefined : { ...treatment, entries };
 }
 
 /**
@@ -129,7 +112,7 @@ export function withStars(question: RunQuestion, stars: readonly number[]): RunQ
     place.set(star, i);
     kept.set(maps.subarray(star * size, (star + 1) * size), i * size);
   });
-  const moved = <Item extends { star: number }>(items: Item[]): Item[] =>
+  const moved = <Item extends { star: number }>(items: readonly Item[]): Item[] =>
     items.flatMap((item) => {
       const star = place.get(item.star);
       return star === undefined ? [] : { ...item, star };

@@ -1,6 +1,7 @@
 import {
   displayRange,
   equalTailedInterval,
+  frequentistBeside,
   highestDensityInterval,
   isSetByPrior,
   type Likelihood,
@@ -10,11 +11,13 @@ import {
   posteriorCurve,
   type RatePosterior,
   type RatePrior,
+  type RateQuestion,
   ratePosterior,
   seenBy,
   TABLE_LEVELS,
   upperLimit,
   viewPopulation,
+  whyNoColumn,
 } from '@/lib/inference';
 import { priorFor } from '@/lib/inference/prior-for';
 import { marginalWeights, type Population } from '@/lib/population';
@@ -32,6 +35,11 @@ export interface AnswerRunInput {
   credibleLevel: number;
   /** Counted detections, each with the index of its star. */
   detections: { name: string; star: number }[];
+  /** Candidates without an answer that count with their probability, and their names. */
+  candidates?: RateQuestion['candidates'];
+  candidateNames?: string[];
+  /** Expected number of false detections among those counted. */
+  background?: number;
   /** Per star, the surveys that list it, as indices. */
   surveysOfStar: number[][];
   surveys: number;
@@ -67,6 +75,21 @@ export interface AnswerRunOutput {
   /** Where the prior of the fraction ends so that no star's own exceeds 1; null: nowhere. */
   cutAt: number | null;
   levels: LevelRow[];
+  /** Why the table has no column for the other quantity; null: it has one. */
+  missingColumn: string | null;
+  /** Limits without a prior, of the counted detections. */
+  beside: {
+    rows: {
+      name: string;
+      /** Null: an upper limit alone. */
+      lower: number | null;
+      upper: number;
+      level: number;
+      isApproximate: boolean;
+      source: string;
+    }[];
+    sentence: string;
+  };
   /** Averages over the stars, rows of mass. */
   meanMap: number[][];
   /** Per survey: stars for which this population's masses are seen at each semi-major axis. */
@@ -78,12 +101,10 @@ export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
   const { maps, grid, population, likelihood, prior, credibleLevel: level } = input;
   const view = viewPopulation(maps, grid, population, input.hostMassMsun);
   const { completeness, exposure } = seenPerStar(view, likelihood);
-  const scaled = view.rateScale === null ? {} : { rateScale: view.rateScale };
   refuseUnseen(input, completeness);
-  const detectedStars = input.detections.map(({ star }) => star);
-  const question = { likelihood, prior, completeness, ...scaled };
-  const posterior = ratePosterior({ ...question, detectedStars });
-  const none = ratePosterior({ ...question, detectedStars: [] });
+  const question = askOf(input, view, likelihood, prior, false);
+  const posterior = ratePosterior(question);
+  const none = ratePosterior(askOf(input, view, likelihood, prior, true));
   const ranges = [displayRange(posterior), displayRange(none)];
   const range: [number, number] = [
     Math.min(...ranges.map(([from]) => from)),
@@ -94,9 +115,11 @@ export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
     exposure,
     answer: summarise(posterior, level, range),
     zero: summarise(none, level, range),
-    atTenthOfFloor: limitAtLowerFloor({ ...question, detectedStars }, level),
+    atTenthOfFloor: limitAtLowerFloor(question, level),
     cutAt: posterior.cutAt,
-    levels: tabulateLevels(input, view, detectedStars),
+    levels: tabulateLevels(input, view),
+    missingColumn: sayMissing(question),
+    beside: standBeside(question, level, posterior),
     meanMap: averageMaps(input),
     depth: stackDepth(input),
   };
@@ -109,13 +132,78 @@ function seenPerStar(view: PopulationView, likelihood: Likelihood) {
   return { completeness, exposure };
 }
 
-function refuseUnseen({ detections }: AnswerRunInput, completeness: Float64Array): void {
+/** The question of a likelihood; with all set aside neither companions nor candidates count. */
+function askOf(
+  input: AnswerRunInput,
+  view: PopulationView,
+  likelihood: Likelihood,
+  prior: RatePrior,
+  isAllSetAside: boolean,
+): RateQuestion {
+  const { detections, candidates, background } = input;
+  const { completeness } = seenPerStar(view, likelihood);
+  return {
+    likelihood,
+    prior,
+    completeness,
+    detectedStars: isAllSetAside ? [] : detections.map(({ star }) => star),
+    ...(view.rateScale !== null && { rateScale: view.rateScale }),
+    ...(background !== undefined && { background }),
+    ...(candidates && !isAllSetAside && { candidates }),
+  };
+}
+
+function refuseUnseen(input: AnswerRunInput, completeness: Float64Array): void {
+  const { detections, candidates, candidateNames = [] } = input;
   const unseen = detections.find(({ star }) => completeness[star] === 0);
-  if (!unseen) return;
-  throw new RangeError(
-    `${unseen.name} was detected where the map of its star says nothing can be seen: ` +
-      'check the map, the ranges or the companion',
+  const check = 'check the map, the ranges or the companion';
+  if (unseen) {
+    throw new RangeError(
+      `${unseen.name} was detected where the map of its star says nothing can be seen: ${check}`,
+    );
+  }
+  const lost = candidates?.entries.findIndex(
+    ({ star, probability }) => probability > 0 && completeness[star] === 0,
   );
+  if (lost === undefined || lost < 0) return;
+  throw new RangeError(
+    `The candidate ${candidateNames[lost]} was found where the map of its star says nothing can be ` +
+      `seen: ${check}, or set candidates aside`,
+  );
+}
+
+function otherLikelihood(likelihood: Likelihood): Likelihood {
+  return likelihood === 'host-fraction' ? 'mean-number' : 'host-fraction';
+}
+
+const columnNames: Record<Likelihood, string> = {
+  'host-fraction': 'no fraction of stars beside the mean number',
+  'mean-number': 'no mean number beside the fraction of stars',
+};
+
+function sayMissing(question: RateQuestion): string | null {
+  const other = otherLikelihood(question.likelihood);
+  const why = whyNoColumn(question, other);
+  return why && `${columnNames[other]}: ${why}`;
+}
+
+function standBeside(
+  question: RateQuestion,
+  level: number,
+  posterior: RatePosterior,
+): AnswerRunOutput['beside'] {
+  const { rows, sentence } = frequentistBeside(question, level, posterior);
+  return {
+    rows: rows.map(({ sides, lower, name, upper, isApproximate, source }) => ({
+      name,
+      lower: sides === 'one-sided' ? null : lower,
+      upper,
+      level,
+      isApproximate,
+      source,
+    })),
+    sentence,
+  };
 }
 
 const CURVE_POINTS = 400;
@@ -151,29 +239,20 @@ function drawable(curve: PosteriorCurve, posterior: RatePosterior): RateSummary[
   };
 }
 
-function tabulateLevels(
-  input: AnswerRunInput,
-  view: PopulationView,
-  detectedStars: number[],
-): LevelRow[] {
+function tabulateLevels(input: AnswerRunInput, view: PopulationView): LevelRow[] {
   const { prior, credibleLevel } = input;
-  const posteriorOf = (likelihood: Likelihood, detected: number[]) => {
+  const posteriorOf = (likelihood: Likelihood, isAllSetAside: boolean) => {
     const own = priorFor(prior, likelihood);
     if (own === null) return null;
-    const { completeness } = seenPerStar(view, likelihood);
-    const scaled = view.rateScale === null ? {} : { rateScale: view.rateScale };
-    return ratePosterior({
-      likelihood,
-      prior: own,
-      completeness,
-      detectedStars: detected,
-      ...scaled,
-    });
+    const question = askOf(input, view, likelihood, own, isAllSetAside);
+    const isOther = likelihood !== input.likelihood;
+    if (isOther && whyNoColumn(question, likelihood) !== null) return null;
+    return ratePosterior(question);
   };
-  const fraction = posteriorOf('host-fraction', detectedStars);
-  const fractionZero = posteriorOf('host-fraction', []);
-  const number = posteriorOf('mean-number', detectedStars);
-  const numberZero = posteriorOf('mean-number', []);
+  const fraction = posteriorOf('host-fraction', false);
+  const fractionZero = posteriorOf('host-fraction', true);
+  const number = posteriorOf('mean-number', false);
+  const numberZero = posteriorOf('mean-number', true);
   const limit = (posterior: RatePosterior | null, level: number) =>
     posterior && upperLimit(posterior, level);
   return [...new Set([...TABLE_LEVELS, credibleLevel])]

@@ -11,6 +11,7 @@ import { database, inTransaction, PopulationRow, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { AnswerRunInput, AnswerRunOutput } from '../compute/answer-run';
 import type { Work } from '../perform';
+import { treatCandidates, warnCutAndCounted } from './run-candidates';
 import { type MergedCompanions, mergeCompanions } from './run-companions';
 import { hostMassesFor } from './run-hosts';
 import { combineMaps, commonGrid } from './run-maps';
@@ -61,6 +62,7 @@ export async function performComputeRun(work: Work): Promise<void> {
   await enter('posterior', 1);
   const inputs = describeInputs(collected, stack, grid);
   const counted = countCompanions(companions.confirmed, inputs, definition, recipe);
+  const candidates = treatCandidates(inputs, definition, recipe, hostMassMsun);
   const output = await work.pool.run<AnswerRunInput, AnswerRunOutput>(
     'answer-run',
     {
@@ -75,6 +77,11 @@ export async function performComputeRun(work: Work): Promise<void> {
         name,
         star: counted.detectedStars[i],
       })),
+      ...(candidates.treatment && {
+        candidates: candidates.treatment,
+        candidateNames: candidates.counted.map(({ name }) => name),
+      }),
+      ...(recipe.background !== undefined && { background: recipe.background }),
       surveysOfStar: inputs.stars.map(({ surveys }) =>
         surveys.map((id) => inputs.surveys.findIndex((survey) => survey.id === id)),
       ),
@@ -84,7 +91,17 @@ export async function performComputeRun(work: Work): Promise<void> {
   );
   await enter('store', 1);
   const result = runResultSchema.parse(
-    assembleResult({ inputs, recipe, population: definition, stack, counted, output, grid }),
+    assembleResult({
+      inputs,
+      recipe,
+      population: definition,
+      stack,
+      counted,
+      candidates,
+      warnings: [warnCutAndCounted(sample, candidates)].filter((warning) => warning !== null),
+      output,
+      grid,
+    }),
   );
   await store(work, run, inputs, result, output.completenessPerStar);
 }

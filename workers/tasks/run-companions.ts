@@ -40,9 +40,34 @@ function asDetection(star: SampleStar, rows: CompanionRow[]): DetectionView {
   };
 }
 
+function asUndecided(
+  star: SampleStar,
+  rows: CompanionRow[],
+  status: string,
+  population: Population,
+): RunInputs['undecided'][number] {
+  const measured =
+    rows.find((row) => row.massMjup !== null && row.semiMajorAxisAu !== null) ?? rows[0];
+  const { massMjup, semiMajorAxisAu } = measured;
+  return {
+    name: `${star.name} ${measured.name}`,
+    star: star.name,
+    starId: star.starId,
+    status,
+    insideRanges:
+      massMjup === null || semiMajorAxisAu === null
+        ? null
+        : isInside(population, massMjup, semiMajorAxisAu, star.hostMassMsun ?? undefined),
+    probability: rows.find((row) => row.probability !== null)?.probability ?? null,
+    massMjup,
+    semiMajorAxisAu,
+  };
+}
+
 /**
  * The companions of a sample: one that two surveys list under the same name is one companion.
- * Values come from the first survey, in the surveys' order, that has mass and semi-major axis.
+ * Values come from the first survey, in the surveys' order, that has mass and semi-major axis; a
+ * candidate's probability from the first that gives one.
  */
 export async function mergeCompanions(
   stars: SampleStar[],
@@ -66,16 +91,7 @@ export async function mergeCompanions(
       const status = CERTAINTY.find((verdict) => group.some((row) => row.status === verdict));
       if (status === 'confirmed') merged.confirmed.push(asDetection(star, group));
       else if (status !== 'background') {
-        const { massMjup: m, semiMajorAxisAu: a } = group[0];
-        merged.undecided.push({
-          name: `${star.name} ${group[0].name}`,
-          star: star.name,
-          status: status ?? group[0].status,
-          insideRanges:
-            m === null || a === null
-              ? null
-              : isInside(population, m, a, star.hostMassMsun ?? undefined),
-        });
+        merged.undecided.push(asUndecided(star, group, status ?? group[0].status, population));
       }
     }
   }

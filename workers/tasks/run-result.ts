@@ -4,6 +4,7 @@ import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { DetectionView, RunInputs, RunResult } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { AnswerRunOutput } from '../compute/answer-run';
+import type { RunCandidates } from './run-candidates';
 import type { MapStack } from './run-stack';
 
 export interface CountedCompanions {
@@ -46,13 +47,16 @@ interface Parts {
   population: Population;
   stack: Pick<MapStack, 'shareOutsideMaps' | 'shareFlaggedCooling'>;
   counted: CountedCompanions;
+  candidates: RunCandidates;
+  /** Conditions that a reader is warned by. */
+  warnings: string[];
   output: AnswerRunOutput;
   grid: MapGrid;
 }
 
 /** The result as it is stored: every number with what it needs to be read. */
 export function assembleResult(parts: Parts): RunResult {
-  const { inputs, recipe, stack, counted, output, grid } = parts;
+  const { inputs, recipe, stack, counted, candidates, output, grid } = parts;
   const { counted: detections, outside, mergedNames } = counted;
   return {
     quantity: quantityOf(recipe),
@@ -67,6 +71,9 @@ export function assembleResult(parts: Parts): RunResult {
     outside,
     mergedNames,
     levels: output.levels,
+    beside: output.beside,
+    candidates: candidates.kept,
+    background: recipe.background ?? null,
     shareOutsideMaps: stack.shareOutsideMaps,
     shareFlaggedCooling: stack.shareFlaggedCooling,
     meanMap: {
@@ -99,7 +106,8 @@ function tabulateStars({ inputs, counted, output }: Parts): RunResult['starTable
     .sort((a, b) => b.probability - a.probability);
 }
 
-function stateResult({ inputs, recipe, population, stack, counted, output }: Parts) {
+function stateResult(parts: Parts) {
+  const { inputs, recipe, population, stack, counted, candidates, output } = parts;
   const { answer } = output;
   const likelihoodCount =
     recipe.likelihood === 'host-fraction'
@@ -122,7 +130,9 @@ function stateResult({ inputs, recipe, population, stack, counted, output }: Par
     constrained: answer.isConstrained,
     setByPrior: answer.isSetByPrior,
     cutAt: output.cutAt,
-    ...(likelihoodCount > 0 && {
+    ...(candidates.stated && { candidates: candidates.stated }),
+    background: recipe.background ?? null,
+    ...(likelihoodCount + candidates.counted.length > 0 && {
       interval: {
         kind: 'equal-tailed' as const,
         low: answer.interval68[0],
@@ -132,16 +142,15 @@ function stateResult({ inputs, recipe, population, stack, counted, output }: Par
     }),
   };
   const { sentence, conditions } = describeLimit(stated);
-  return { sentence, conditions: [...conditions, ...extraConditions(inputs, stack, counted)] };
+  return { sentence, conditions: [...conditions, ...extraConditions(parts)] };
 }
 
 /** What the likelihood's own conditions do not say. */
-function extraConditions(
-  inputs: RunInputs,
-  { shareFlaggedCooling }: Parts['stack'],
-  { outside, mergedNames }: CountedCompanions,
-): string[] {
-  const conditions: string[] = [];
+function extraConditions({ inputs, stack, counted, output, warnings }: Parts): string[] {
+  const { shareFlaggedCooling } = stack;
+  const { outside, mergedNames } = counted;
+  const conditions = [...warnings];
+  if (output.missingColumn !== null) conditions.push(`Table of limits: ${output.missingColumn}`);
   if (shareFlaggedCooling > 0) {
     const share = (100 * shareFlaggedCooling).toPrecision(2);
     conditions.push(

@@ -3,7 +3,8 @@ import type { Population } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { DetectionView, RunInputs } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
-import type { OpenCandidate, RunQuestion } from '../answers/run-question';
+import type { RunQuestion } from '../answers/run-question';
+import { openCandidatesOf } from './run-candidates';
 
 export type { RunQuestion } from '../answers/run-question';
 
@@ -37,18 +38,11 @@ function asDetection(found: DetectionView, star: number): MeasuredDetection {
   };
 }
 
-function openCandidates(inputs: RunInputs): OpenCandidate[] {
-  return inputs.undecided.flatMap(({ name, starId, probability, massMjup, semiMajorAxisAu }) => {
-    const star = inputs.stars.findIndex((one) => one.starId === starId);
-    if (star < 0 || probability == null || massMjup == null || semiMajorAxisAu == null) return [];
-    return { name, star, probability, massMjup, semiMajorAxisAu };
-  });
-}
-
 /** The question of a run as its stored inputs and its own copy of the recipe state it. */
 export function questionOf(parts: Parts): RunQuestion {
   const { maps, grid, population, recipe, inputs } = parts;
-  const confirmed = recipe.detections === 'none' ? [] : inputs.companions;
+  const isAllSetAside = recipe.detections === 'none';
+  const confirmed = isAllSetAside ? [] : inputs.companions;
   const starOf = new Map(inputs.stars.map(({ starId }, i) => [starId, i]));
   return {
     maps,
@@ -62,7 +56,10 @@ export function questionOf(parts: Parts): RunQuestion {
       const star = starOf.get(found.starId);
       return star === undefined ? [] : asDetection(found, star);
     }),
-    candidates: recipe.candidates ? { ...recipe.candidates, open: openCandidates(inputs) } : null,
+    candidates:
+      recipe.candidates && !isAllSetAside
+        ? { ...recipe.candidates, open: openCandidatesOf(inputs) }
+        : null,
     background: recipe.background ?? null,
   };
 }
