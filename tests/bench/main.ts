@@ -3,6 +3,7 @@ import { parseArgs } from 'node:util';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
 import project from '@/package.json';
 import { type Amount, FULL, QUICK } from './amount';
+import { calibrationLines } from './calibration';
 import { GRID, GRIDS } from './grid';
 import { liveLines } from './live';
 import { mapLines } from './maps';
@@ -21,6 +22,7 @@ const groups: Record<string, Group> = {
   maps: async (amount) => [...mapLines(amount), ...(await numpyLines(amount))],
   posterior: posteriorLines,
   live: liveLines,
+  calibration: calibrationLines,
   // Loaded when it is asked for: the others need no database.
   storage: async (amount) => (await import('./storage')).storageLines(amount),
   wire: wireLines,
