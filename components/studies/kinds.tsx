@@ -12,17 +12,20 @@ import { sweepInWords } from './sweep/sweep-words';
 import { systematicsInWords } from './systematics/systematics-words';
 
 const AnswerWaits = () => (
-  <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
+  <p className="max-w-none rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
     Drawing the answer
   </p>
 );
 const FormWaits = () => (
-  <p className="rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
+  <p className="max-w-none rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
     Opening the settings
   </p>
 );
 
-/** Each kind brings its form, its answer and its numbers; a page loads those of one kind. */
+/**
+ * Each kind brings its form, its answer and its numbers; a page loads those of one kind.
+ * The options of `dynamic` must be written out at each call: the compiler reads them.
+ */
 export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
   systematics: {
     Form: dynamic(async () => (await import('./systematics/systematics-form')).SystematicsForm, {
@@ -110,13 +113,12 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     loadTables: async () => (await import('./counts/counts-tables')).countsTables,
   },
   calibration: {
-    Form: dynamic(
-      async () => (await import('./calibration/calibration-form')).CalibrationForm,
-      whileForm,
-    ),
+    Form: dynamic(async () => (await import('./calibration/calibration-form')).CalibrationForm, {
+      loading: FormWaits,
+    }),
     Answer: dynamic(
       async () => (await import('./calibration/calibration-answer')).CalibrationAnswer,
-      whileAnswer,
+      { loading: AnswerWaits },
     ),
     settingsInWords: calibrationInWords,
     loadTables: async () => (await import('./calibration/calibration-tables')).calibrationTables,

@@ -204,7 +204,7 @@ function AnswerToCome({ isKnown, isExpected }: { isKnown: boolean; isExpected: b
     );
   }
   return (
-    <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
+    <p className="max-w-none rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
       Fetching the answer
     </p>
   );
