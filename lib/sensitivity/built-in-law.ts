@@ -172,8 +172,9 @@ export function builtInMagnitudes(
   const magnitudes = new Float64Array(massMjup.length * agesMyr.length);
   const outsideValidity: number[] = [];
   for (const age of agesMyr) requireLawRange(BUILT_IN_LAW_RANGE.massMinMjup, age);
+  const bodies = referenceBodies(massMjup);
   for (let i = 0; i < massMjup.length; i++) {
-    const { teffK, radiusM } = cooledBody(massMjup[i], REFERENCE_AGE_MYR);
+    const { teffK, radiusM } = bodies[i];
     const scale = (Math.PI * planck.scale * (radiusM / TEN_PARSECS_M) ** 2) / zeroFlux;
     let isValid = true;
     for (let k = 0; k < agesMyr.length; k++) {
@@ -185,6 +186,18 @@ export function builtInMagnitudes(
     if (!isValid) outsideValidity.push(i);
   }
   return { magnitudes, outsideValidity };
+}
+
+let kept: { massMjup: Float64Array; bodies: CooledBody[] } | null = null;
+
+/** The masses at the law's reference age; kept, because every star of a survey asks for the same. */
+function referenceBodies(massMjup: Float64Array): CooledBody[] {
+  const isKept =
+    kept?.massMjup.length === massMjup.length && kept.massMjup.every((m, i) => m === massMjup[i]);
+  if (kept && isKept) return kept.bodies;
+  const bodies = Array.from(massMjup, (mass) => cooledBody(mass, REFERENCE_AGE_MYR));
+  kept = { massMjup: massMjup.slice(), bodies };
+  return bodies;
 }
 
 /**

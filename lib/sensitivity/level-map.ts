@@ -108,7 +108,7 @@ function phasesFor(
 ): SeparationPhases | null {
   const axisStep = evenStep(logAxis);
   if (axisStep === null) return null;
-  const key = JSON.stringify(Object.entries(law).sort());
+  const key = lawKey(law);
   const isKnown =
     workspace.law === key &&
     workspace.firstLogAxis === logAxis[0] &&
@@ -119,6 +119,14 @@ function phasesFor(
   workspace.kernels.reserve(phases.planes.length).set(phases.planes);
   Object.assign(workspace, { law: key, firstLogAxis: logAxis[0], axisStep, stride, phases });
   return phases;
+}
+
+/** Names a law with its numbers: this is asked for every star. */
+function lawKey(law: EccentricityLaw): string {
+  if (law.law === 'beta') return `beta ${law.alpha} ${law.beta}`;
+  if (law.law === 'fixed') return `fixed ${law.eccentricity}`;
+  if (law.law === 'uniform') return `uniform ${law.max}`;
+  return law.law === 'rayleigh' ? `rayleigh ${law.sigma}` : law.law;
 }
 
 /** First column, by blocks, whose largest separation reaches the curve's beginning. */
