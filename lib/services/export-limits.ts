@@ -5,7 +5,13 @@ import {
   writeCsv,
   writeLatexTable,
 } from '@/lib/formats';
-import { describeLevel, describePopulation, describePrior, type RatePrior } from '@/lib/inference';
+import {
+  describeCandidates,
+  describeLevel,
+  describePopulation,
+  describePrior,
+  type RatePrior,
+} from '@/lib/inference';
 import { priorFor } from '@/lib/inference/prior-for';
 import { type Population, type PopulationBox, populationBox } from '@/lib/population';
 import { formatSignificant } from '@/lib/quantities/display';
@@ -41,9 +47,19 @@ function statedRange(population: Population): StatedRange {
 /** How detections enter, in words. */
 export function countingRule(run: FinishedRun, isZero: boolean, quantity: Quantity): string {
   if (isZero || run.recipe.detections === 'none') return 'all detections set aside';
-  return quantity === 'host_fraction'
-    ? 'confirmed companions inside the ranges, one per star'
-    : 'confirmed companions inside the ranges, every one';
+  const confirmed =
+    quantity === 'host_fraction'
+      ? 'confirmed companions inside the ranges, one per star'
+      : 'confirmed companions inside the ranges, every one';
+  return run.result.candidates
+    ? `${confirmed}; candidates without an answer by their probability`
+    : confirmed;
+}
+
+/** What became of candidates without an answer, where candidates can count at all. */
+function candidateWords({ result }: FinishedRun, isZero: boolean): string {
+  const { candidates } = result;
+  return isZero || candidates === null ? 'set aside' : describeCandidates(candidates);
 }
 
 export function countedDetections(run: FinishedRun, isZero: boolean, quantity: Quantity): number {
@@ -154,6 +170,11 @@ export function writeLimitsCsv(run: FinishedRun): string {
     same('run', run.number),
     same('engine_version', run.engineVersion),
     each('counting_rule', ({ isZero, quantity }) => countingRule(run, isZero, quantity)),
+    each('candidates', ({ isZero }) => candidateWords(run, isZero)),
+    same('background', result.background),
+    each('prior_cut_at', ({ quantity }) =>
+      quantity === result.quantity ? result.priorCutAt : null,
+    ),
     same('combination', inputs.combination),
     same('credible_level_of_run', recipe.credibleLevel),
     same('run_digest', run.resultDigest),
@@ -186,6 +207,9 @@ export function writePosteriorCsv(run: FinishedRun): string {
     same('n_targets', result.stars),
     same('n_companions', countedDetections(run, false, result.quantity)),
     same('counting_rule', countingRule(run, false, result.quantity)),
+    same('candidates', candidateWords(run, false)),
+    same('background', result.background),
+    same('prior_cut_at', result.priorCutAt),
     same('combination', inputs.combination),
     same('analysis', run.analysis),
     same('run', run.number),

@@ -1,6 +1,7 @@
 import type { Actor } from '@/lib/access/actor';
 import { Conflict, NotFound } from '@/lib/errors';
 import type { LatexStyle } from '@/lib/formats';
+import { runResultSchema } from '@/lib/schemas/runs';
 import { AnalysisRow, inTransaction, PopulationRow } from '@/models';
 import { recordAudit } from './audit';
 import {
@@ -33,7 +34,8 @@ export async function getFinishedRun(actor: Actor, id: string): Promise<Finished
     recipe,
     population: population.definition,
     inputs,
-    result,
+    // A result from before a field existed says so in the field's own words.
+    result: runResultSchema.parse(result),
     resultDigest,
     engineVersion,
   };
