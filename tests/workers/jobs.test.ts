@@ -242,7 +242,16 @@ describe('runs', () => {
     expect(run.result?.counted.map(({ name }) => name)).toEqual(['Other c']);
     expect(run.result?.outside.map(({ name }) => name)).toEqual(['Other far']);
     expect(run.inputs?.undecided).toEqual([
-      { name: 'Other cc1', star: 'Other', status: 'candidate', insideRanges: null },
+      {
+        name: 'Other cc1',
+        star: 'Other',
+        starId: other.starId,
+        status: 'candidate',
+        insideRanges: null,
+        probability: null,
+        massMjup: null,
+        semiMajorAxisAu: 45,
+      },
     ]);
     const seen = run.result?.starTable.map(({ probability }) => probability) ?? [];
     expect(seen[0]).toBe(seen[1]);
