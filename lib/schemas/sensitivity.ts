@@ -29,7 +29,7 @@ export const mapSettingsSchema = z.strictObject({
     .default({ kind: 'built-in' }),
   massOutsideTable: z.enum(['undetectable', 'edge']).default('undetectable'),
   ageOutsideTable: z.enum(['refuse', 'edge']).default('refuse'),
-  /** Age nodes on each side of the median: more for stars with wide ages; 5 (smooth) or 10 (hard) if absent. */
+  /** Age nodes on each side of the median; if absent, ages are integrated exactly where a star has one curve. */
   ageNodesPerSide: z.number().int().min(5).max(80).optional(),
   /** Raises the limits close to the star for its few resolution elements; null: curves as given. */
   smallSample: z

@@ -112,7 +112,10 @@ export interface SensitivitySettings {
   /** What a mass outside the cooling table means: never detected, or the edge value above the table. */
   massOutsideTable: 'undetectable' | 'edge';
   ageOutsideTable: 'refuse' | 'edge';
-  /** Age nodes on each side of the median; default 5 under the smooth threshold, 10 under the hard. */
+  /**
+   * Asks for so many age nodes on each side of the median. Absent, one curve is integrated exactly
+   * in age; several curves of one star take 5 (smooth) or 10 (hard).
+   */
   ageNodesPerSide?: number;
   /** Raises the thresholds close to the star, see correctForSmallSamples; absent: as given. */
   smallSample?: { fwhmArcsec: number };
