@@ -94,6 +94,7 @@ export function LabBar({ me, current, theme }: LabBarProps) {
           <NavLink href={`${base}/surveys`}>Surveys</NavLink>
           <NavLink href={`${base}/populations`}>Populations</NavLink>
           <NavLink href={`${base}/analyses`}>Analyses</NavLink>
+          <NavLink href={`${base}/forecasts`}>Forecasts</NavLink>
         </>
       }
       tools={

@@ -58,7 +58,12 @@ export function FurtherQuestions(props: FurtherQuestionsProps) {
               </div>
               <Link
                 className="inline-flex items-center font-semibold max-md:min-h-11 md:justify-end"
-                href={questionAddress(collaboration, analysisKey, kind)}
+                href={questionAddress(
+                  collaboration,
+                  analysisKey,
+                  kind,
+                  kind === 'forecast' ? study?.id : undefined,
+                )}
               >
                 {study ? 'Open' : 'Ask'}
                 <span className="sr-only">: {title}</span>

@@ -67,6 +67,10 @@ export function questionAddress(
   kind: StudyKind,
   answerId?: string,
 ): string {
+  if (kind === 'forecast') {
+    const forecasts = `/${collaboration}/forecasts`;
+    return answerId ? `${forecasts}/${answerId}` : `${forecasts}/new?analysis=${analysis}`;
+  }
   const base = `/${collaboration}/analyses/${analysis}`;
   const page = kind === 'calibration' ? `${base}/calibration` : `${base}/studies/${kind}`;
   return answerId === undefined ? page : `${page}?answer=${answerId}`;

@@ -2,6 +2,7 @@ import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { calibrationInWords } from './calibration/calibration-words';
 import { countsInWords } from './counts/counts-words';
+import { forecastInWords } from './forecast/forecast-words';
 import { freeIndicesInWords } from './free-indices/free-indices-words';
 import { influenceInWords } from './influence/influence-words';
 import type { KindEntry } from './kind-entry';
@@ -122,6 +123,15 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     ),
     settingsInWords: calibrationInWords,
     loadTables: async () => (await import('./calibration/calibration-tables')).calibrationTables,
+  },
+  forecast: {
+    Form: dynamic(async () => (await import('./forecast/forecast-form')).ForecastForm, whileForm),
+    Answer: dynamic(
+      async () => (await import('./forecast/forecast-answer')).ForecastAnswer,
+      whileAnswer,
+    ),
+    settingsInWords: forecastInWords,
+    loadTables: async () => (await import('./forecast/forecast-tables')).forecastTables,
   },
 };
 

@@ -1,0 +1,45 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { NewForecast } from '@/components/studies/forecast/new-forecast';
+import type { Actor } from '@/lib/access/actor';
+import { may } from '@/lib/access/permissions';
+import { NotFound } from '@/lib/errors';
+import { listAnalyses } from '@/lib/services/analyses';
+import { getStudy } from '@/lib/services/studies';
+
+export const metadata: Metadata = { title: 'New forecast' };
+
+export default async function NewForecastPage({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ collaboration: string }>;
+  searchParams: Promise<Record<string, string | undefined>>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const { analysis, from } = await searchParams;
+  const [{ analyses }, earlier] = await Promise.all([
+    listAnalyses(actor),
+    from === undefined ? null : findForecast(actor, from),
+  ]);
+  const canAsk = may(actor, 'run-analysis', { isOwn: true });
+  return (
+    <NewForecast
+      collaboration={actor.collaboration}
+      analyses={analyses}
+      wanted={earlier?.run.analysisKey ?? analysis}
+      start={earlier?.settings.kind === 'forecast' ? earlier.settings : undefined}
+      disabledReason={canAsk ? undefined : 'Only members of this collaboration can ask for one.'}
+    />
+  );
+}
+
+/** One that is gone leaves the form empty. */
+async function findForecast(actor: Actor, id: string) {
+  try {
+    return await getStudy(actor, id);
+  } catch (reason) {
+    if (reason instanceof NotFound) return null;
+    throw reason;
+  }
+}

@@ -1,0 +1,108 @@
+'use client';
+
+import { useRef } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useStudy } from '@/components/hooks/use-studies';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { StateMark } from '@/components/ui/state-mark';
+import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { RunView } from '@/lib/schemas/runs';
+import type { StudyView } from '@/lib/schemas/studies';
+import { AnswerExports } from '../answer-exports';
+import { AnswerConditions, AnswerProvenance } from '../answer-foot';
+import { answerOf, useAnsweredRun } from '../answered-run';
+import { kinds } from '../kinds';
+import { QuestionEnded, QuestionProgress } from '../question-progress';
+import { plannedInWords } from './forecast-words';
+
+interface ForecastScreenProps {
+  collaboration: string;
+  study: StudyView;
+  analysis: AnalysisView;
+  /** Newest finished run of the analysis; the forecast may rest on an earlier one. */
+  run: RunView | null;
+  runPopulation: ListedPopulation | null;
+  canAsk: boolean;
+}
+
+/** One forecast: its job while it is computed, then its answer and what that rests on. */
+export function ForecastScreen(props: ForecastScreenProps) {
+  const { collaboration, analysis, run, runPopulation, canAsk } = props;
+  const { data: study = props.study, error, mutate } = useStudy(collaboration, props.study.id);
+  const area = useRef<HTMLDivElement>(null);
+  const answered = useAnsweredRun({ collaboration, analysis, run, runPopulation, study });
+  const answer = answered && answerOf('forecast', study, answered);
+  const entry = kinds.forecast;
+  const { settings, job } = study;
+  if (settings.kind !== 'forecast' || !entry) return null;
+  const shared = {
+    collaboration,
+    study,
+    name: settings.name,
+    canStop: canAsk,
+    onChanged: () => {
+      void mutate();
+    },
+  };
+  return (
+    <>
+      <PageTitle
+        title={settings.name}
+        crumbs={[
+          { href: `/${collaboration}/forecasts`, label: 'Forecasts' },
+          { label: `from ${study.run.analysisKey}, run ${study.run.number}` },
+        ]}
+        state={<StateMark kind="draft">Forecast</StateMark>}
+        context={plannedInWords(settings)}
+        actions={
+          <>
+            {canAsk && (
+              <LinkButton href={`/${collaboration}/forecasts/new?from=${study.id}`}>
+                Change and ask again
+              </LinkButton>
+            )}
+            {answer && <AnswerExports entry={entry} answer={answer} area={area} />}
+          </>
+        }
+      />
+      <div className="grid min-w-0 gap-8 pb-10">
+        {error !== undefined && (
+          <Notice tone="bad" title="The forecast could not be fetched anew.">
+            {sentenceOf(error)}
+          </Notice>
+        )}
+        {(job.status === 'waiting' || job.status === 'running') && <QuestionProgress {...shared} />}
+        {(job.status === 'failed' || job.status === 'cancelled') && (
+          <QuestionEnded {...shared} mend="Change it and ask again, or retry as it is." />
+        )}
+        {answer && (
+          <>
+            <section className="min-w-0">
+              {study.headline !== null && (
+                <p className="statement mb-5 max-w-5xl">
+                  <i>Forecast.</i> {study.headline}
+                </p>
+              )}
+              <div ref={area} className="min-w-0">
+                <entry.Answer {...answer} />
+              </div>
+            </section>
+            <AnswerConditions
+              asked={answer.asked}
+              settings={`forecast, ${entry.settingsInWords(settings)}`}
+            />
+            <AnswerProvenance collaboration={collaboration} study={study} />
+          </>
+        )}
+        {!answer && job.status === 'done' && (
+          <p className="rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
+            Fetching the run that this forecast starts from
+          </p>
+        )}
+      </div>
+    </>
+  );
+}

@@ -1,0 +1,131 @@
+'use client';
+
+import { useRouter } from 'next/navigation';
+import { useState } from 'react';
+import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
+import { usePopulations } from '@/components/hooks/use-populations';
+import { useRun } from '@/components/hooks/use-runs';
+import { askStudy } from '@/components/hooks/use-studies';
+import { isFinished } from '@/components/runs/result-screen';
+import { EmptyState } from '@/components/ui/empty-state';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { SelectField } from '@/components/ui/select-field';
+import { StateMark } from '@/components/ui/state-mark';
+import type { Fault } from '@/lib/errors';
+import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { SettingsOf } from '@/lib/schemas/study-settings';
+import { askedRun } from '../answered-run';
+import { ForecastForm } from './forecast-form';
+
+interface NewForecastProps {
+  collaboration: string;
+  analyses: AnalysisView[];
+  /** Key of the analysis to start from. */
+  wanted?: string;
+  /** An earlier forecast whose settings are taken over. */
+  start?: SettingsOf<'forecast'>;
+  /** Why this person cannot ask. */
+  disabledReason?: string;
+}
+
+/** From which run, and what is planned; the answer has a page of its own. */
+export function NewForecast(props: NewForecastProps) {
+  const { collaboration, start, disabledReason } = props;
+  const router = useRouter();
+  const bases = props.analyses.filter(({ runs }) => runs.some(isFinished));
+  const [key, setKey] = useState(
+    bases.find((one) => one.key === props.wanted)?.key ?? bases[0]?.key ?? '',
+  );
+  const [isBusy, setBusy] = useState(false);
+  const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
+  const analysis = bases.find((one) => one.key === key);
+  const { data: run, error } = useRun(collaboration, analysis?.runs.find(isFinished)?.id);
+  const { data: populations } = usePopulations(collaboration);
+  const definition = populations?.find(({ id }) => id === run?.inputs?.population.id) ?? null;
+  const asked = analysis && run && askedRun({ collaboration, analysis, run, definition });
+
+  const ask = async (settings: SettingsOf<'forecast'>) => {
+    if (!run) return;
+    setBusy(true);
+    setProblem(undefined);
+    try {
+      const begun = await askStudy(collaboration, run.id, settings);
+      router.push(`/${collaboration}/forecasts/${begun.id}`);
+    } catch (reason) {
+      const faults = reason instanceof ApiProblem ? reason.faults : [];
+      setProblem({ sentence: sentenceOf(reason), faults });
+      setBusy(false);
+    }
+  };
+
+  return (
+    <>
+      <PageTitle
+        title="New forecast"
+        crumbs={[
+          { href: `/${collaboration}/forecasts`, label: 'Forecasts' },
+          { label: 'new forecast' },
+        ]}
+        state={<StateMark kind="draft">Forecast</StateMark>}
+        context="What would more stars or deeper images add?"
+      />
+      {bases.length === 0 ? (
+        <EmptyState
+          title="No run to start from yet"
+          actions={
+            <LinkButton variant="primary" href={`/${collaboration}/analyses`}>
+              Go to the analyses
+            </LinkButton>
+          }
+        >
+          A forecast takes its population, prior and level from a finished run, and its stars from
+          that run or from a list. Run an analysis first.
+        </EmptyState>
+      ) : (
+        <div className="grid min-w-0 gap-5 pb-10">
+          <div className="w-[28rem] max-md:w-full">
+            <SelectField
+              label="Starting from"
+              value={key}
+              onChange={(event) => setKey(event.target.value)}
+              options={bases.map((one) => ({
+                value: one.key,
+                label: `${one.key} ${one.name}, run ${one.runs.find(isFinished)?.number}`,
+              }))}
+              hint={asked?.result.statement.sentence}
+            />
+          </div>
+          {error !== undefined && (
+            <Notice tone="bad" title="The run could not be fetched.">
+              {sentenceOf(error)}
+            </Notice>
+          )}
+          {asked ? (
+            <ForecastForm
+              key={asked.run.id}
+              asked={asked}
+              start={start}
+              isBusy={isBusy}
+              disabledReason={disabledReason}
+              faults={problem?.faults ?? []}
+              onAsk={ask}
+            />
+          ) : (
+            error === undefined && (
+              <p className="rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
+                Fetching the run of {key}
+              </p>
+            )
+          )}
+          {problem !== undefined && problem.faults.length === 0 && (
+            <Notice tone="bad" title="It was not asked." isAnnounced>
+              {problem.sentence}
+            </Notice>
+          )}
+        </div>
+      )}
+    </>
+  );
+}
