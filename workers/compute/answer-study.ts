@@ -1,5 +1,14 @@
 import type { ResultOf } from '@/lib/schemas/study-results';
+import {
+  type CalibrationMergeInput,
+  type CalibrationPlan,
+  type CalibrationPlanInput,
+  calibratePart,
+  mergeParts,
+  planCalibration,
+} from '../answers/calibration';
 import { answerCounts, type CountsInput } from '../answers/counts';
+import { answerForecast, type ForecastInput } from '../answers/forecast';
 import { answerFreeIndices, type FreeIndicesInput } from '../answers/free-indices';
 import { answerInfluence, type InfluenceInput, type InfluenceOutput } from '../answers/influence';
 import { answerLimit, type LimitOutput } from '../answers/limit';
@@ -14,6 +23,13 @@ export interface StudyTasks {
   influence: { input: InfluenceInput; output: InfluenceOutput };
   'free-indices': { input: FreeIndicesInput; output: ResultOf<'free-indices'> };
   counts: { input: CountsInput; output: ResultOf<'counts'> };
+  forecast: { input: ForecastInput; output: ReturnType<typeof answerForecast> };
+  'calibration-plan': { input: CalibrationPlanInput; output: CalibrationPlan };
+  'calibration-part': {
+    input: Parameters<typeof calibratePart>[0];
+    output: ReturnType<typeof calibratePart>;
+  };
+  'calibration-merge': { input: CalibrationMergeInput; output: ResultOf<'calibration'> };
   'limit-map': { input: LimitMapInput; output: ResultOf<'limit-map'> };
   sweep: { input: SweepInput; output: ResultOf<'sweep'> };
   'population-comparison': {
@@ -31,6 +47,10 @@ const answers: Answers = {
   influence: answerInfluence,
   'free-indices': answerFreeIndices,
   counts: answerCounts,
+  forecast: answerForecast,
+  'calibration-plan': planCalibration,
+  'calibration-part': calibratePart,
+  'calibration-merge': mergeParts,
   'limit-map': answerLimitMap,
   sweep: answerSweep,
   'population-comparison': answerComparison,

@@ -5,9 +5,11 @@ import type { StudyKind } from '@/lib/schemas/study-settings';
 import { inTransaction, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { Work } from '../perform';
+import { performCalibration } from './study-calibration';
 import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
 import { performCounts } from './study-counts';
+import { performForecast } from './study-forecast';
 import { performFreeIndices } from './study-free-indices';
 import { performInfluence } from './study-influence';
 import { performLimitMap, performSweep } from './study-limits';
@@ -15,9 +17,11 @@ import { performOverlapRules } from './study-overlap-rules';
 import { performSystematics } from './study-systematics';
 import { headlineOf } from './study-words';
 
-const studyKinds: { [Kind in StudyKind]?: StudyPerformer<Kind> } = {
+const studyKinds: { [Kind in StudyKind]: StudyPerformer<Kind> } = {
   'free-indices': performFreeIndices,
   counts: performCounts,
+  forecast: performForecast,
+  calibration: performCalibration,
   influence: performInfluence,
   'limit-map': performLimitMap,
   sweep: performSweep,

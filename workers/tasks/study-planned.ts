@@ -10,15 +10,13 @@ import { ensureMaps, type NewMap } from './study-maps';
 import { loadRunSample } from './study-sample';
 import { makeVariations, planVariation } from './study-variation';
 
-/** The stars of a planned survey: different ones once each, and which of them is observed when. */
+/** The stars of a planned survey, or those that its stars are to be like. */
 export interface PlannedStars {
   names: string[];
   /** Shape [name, mass, semiMajorAxis] on the run's grid, round(65535 C). */
   maps: Uint16Array;
   /** Shape [name] [M_Sun], NaN where unknown. */
   hostMassMsun: Float64Array;
-  /** For every planned star, the index of its name. */
-  observed: Int32Array;
   notes: string[];
 }
 
@@ -34,7 +32,7 @@ export function collectPlanned(given: StudyWork, planned: PlannedSurvey): Promis
 async function collectLikeThese(given: StudyWork, planned: LikeThese): Promise<PlannedStars> {
   const { run, collaborationId, grid, question } = given;
   const { stars } = run.inputs;
-  const { surveyIds, deeperByMag, count } = planned;
+  const { surveyIds, deeperByMag } = planned;
   const chosen = [...stars.keys()].filter(
     (star) => !surveyIds || stars[star].surveys.some((id) => surveyIds.includes(id)),
   );
@@ -57,7 +55,6 @@ async function collectLikeThese(given: StudyWork, planned: LikeThese): Promise<P
     names: chosen.map((star) => stars[star].name),
     maps,
     hostMassMsun: Float64Array.from(chosen, (star) => question.hostMassMsun[star]),
-    observed: Int32Array.from({ length: count }, (_, i) => i % chosen.length),
     notes,
   };
 }
@@ -143,7 +140,6 @@ async function collectTargets(given: StudyWork, planned: Targets): Promise<Plann
     names: planned.targets.map(({ name }) => name),
     maps: await readMaps(collaborationId, digests, grid),
     hostMassMsun: Float64Array.from(planned.targets, (one) => one.hostMassMsun ?? Number.NaN),
-    observed: Int32Array.from(planned.targets.keys()),
     notes: [`Maps by the settings of ${first.name}: ${recipe.coolingName}`],
   };
 }
