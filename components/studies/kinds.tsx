@@ -125,11 +125,12 @@ export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
     loadTables: async () => (await import('./calibration/calibration-tables')).calibrationTables,
   },
   forecast: {
-    Form: dynamic(async () => (await import('./forecast/forecast-form')).ForecastForm, whileForm),
-    Answer: dynamic(
-      async () => (await import('./forecast/forecast-answer')).ForecastAnswer,
-      whileAnswer,
-    ),
+    Form: dynamic(async () => (await import('./forecast/forecast-form')).ForecastForm, {
+      loading: FormWaits,
+    }),
+    Answer: dynamic(async () => (await import('./forecast/forecast-answer')).ForecastAnswer, {
+      loading: AnswerWaits,
+    }),
     settingsInWords: forecastInWords,
     loadTables: async () => (await import('./forecast/forecast-tables')).forecastTables,
   },

@@ -65,7 +65,8 @@ export function draftOfForecast(start: Forecast | undefined): Draft {
 const typed = (value: string) => readNumber(value) ?? value;
 const share = (value: string) => {
   const percentage = readNumber(value);
-  return percentage === undefined ? value : percentage / 100;
+  // A hundredth of 2.9 has no more digits than 2.9 has.
+  return percentage === undefined ? value : Number((percentage / 100).toPrecision(12));
 };
 
 /** The draft in the shape that the schema reads. */
