@@ -52,8 +52,12 @@ describe('kinds of questions', () => {
     for (const kind of kindOrder) {
       expect(kindWords[kind].question).toMatch(/\?$/);
       expect(`${kindWords[kind].title} ${kindWords[kind].question}`).not.toMatch(/stud(y|ies)/i);
-      expect(questionAddress('lab', 'A-1', kind)).toMatch(/^\/lab\/analyses\/A-1\//);
+      const isForecast = kind === 'forecast';
+      expect(questionAddress('lab', 'A-1', kind)).toMatch(
+        isForecast ? /^\/lab\/forecasts\/new\?analysis=A-1$/ : /^\/lab\/analyses\/A-1\//,
+      );
     }
+    expect(questionAddress('lab', 'A-1', 'forecast', 'x')).toBe('/lab/forecasts/x');
     expect(questionAddress('lab', 'A-1', 'calibration', 'x')).toBe(
       '/lab/analyses/A-1/calibration?answer=x',
     );
