@@ -183,7 +183,7 @@ function Here({ x, y, name, frame }: { x: number; y: number; name: string; frame
     <g>
       <circle className="knob" cx={x} cy={y} r="6" />
       <text
-        className="halo"
+        className="bold page-halo"
         x={hangsLeft ? x - 10 : x + 10}
         y={row}
         textAnchor={hangsLeft ? 'end' : 'start'}

@@ -19,10 +19,12 @@ export function CountsAnswer({ asked, result }: AnswerProps<'counts'>) {
             name: asked.quantity === 'host_fraction' ? 'host fraction' : 'rate',
             value: formatRate(result.rate, asked.quantity),
           },
-          {
-            name: `chance of ${result.counted} or more at that rate`,
-            value: formatPercent(result.atLeastCounted),
-          },
+          result.counted === 0
+            ? { name: 'chance of none at that rate', value: formatPercent(result.atRate[0] ?? 0) }
+            : {
+                name: `chance of ${result.counted} or more at that rate`,
+                value: formatPercent(result.atLeastCounted),
+              },
           { name: 'chance of none in a repeat', value: formatPercent(none) },
         ]}
       />
