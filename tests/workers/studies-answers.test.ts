@@ -1,12 +1,16 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { ratePosterior } from '@/lib/inference';
+import { forecastSurvey, ratePosterior, starsLikeThese } from '@/lib/inference';
 import { freeIndices } from '@/lib/inference/settled-indices';
 import { populationBox } from '@/lib/population';
 import type { StudyKind } from '@/lib/schemas/study-settings';
 import { studySettingsSchema } from '@/lib/schemas/study-settings';
 import { startStudy } from '@/lib/services/studies';
-import { type PopulationRow, TargetRow } from '@/models';
-import { answerRunQuestion, type RunQuestion } from '@/workers/answers/run-question';
+import { CompletenessMapRow, type PopulationRow, TargetRow } from '@/models';
+import {
+  answerRunQuestion,
+  type RunQuestion,
+  rateQuestionOf,
+} from '@/workers/answers/run-question';
 import { withDatabase } from '../support/database';
 import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { POPULATION } from '../support/population';
@@ -232,5 +236,99 @@ describe('limit against a parameter', () => {
     await expect(startStudy(lab.owner, lab.run.id, settings)).rejects.toMatchObject({
       faults: [{ item: 'to', code: 'range-order' }],
     });
+  });
+});
+
+describe('forecast', () => {
+  it('of stars like these equals the pure functions, at an assumed rate', async () => {
+    const { result } = await ask<'forecast'>({
+      kind: 'forecast',
+      name: 'Twice as many',
+      planned: { kind: 'stars-like-these', count: 16 },
+      assumedRate: 0.1,
+    });
+    const known = rateQuestionOf(question).rateQuestion;
+    const sample = starsLikeThese(known, 16);
+    const direct = forecastSurvey(
+      known,
+      { likelihood: known.likelihood, completeness: sample.completeness },
+      question.level,
+      0.1,
+    );
+    expect(result.stars).toBe(16);
+    expect(result.limitIfNone).toBe(direct.limitIfNone);
+    expect(result.limitIfNoneTogether).toBe(direct.limitIfNoneTogether);
+    const none = sample.completeness.reduce((product, c) => product * (1 - 0.1 * c), 1);
+    expect(result.chanceOfNone).toBeCloseTo(none, 12);
+    const expected = 0.1 * sample.completeness.reduce((sum, c) => sum + c, 0);
+    expect(result.yield.mean).toBeCloseTo(expected, 9);
+    expect(result.limitIfNoneTogether).toBeLessThan(limit());
+    expect(result.against.stars.at(-1)).toBe(16);
+    expect(result.against.limitIfNone.at(-1)).toBeCloseTo(result.limitIfNone, 9);
+    expect(result.gain).toHaveLength(8);
+    expect(result.gain[0].limitWithItAlone).toBeLessThan(limit());
+    expect(result.wantedLimit).toBe(0.5 * limit());
+    const needed = result.starsNeeded as number;
+    const limitOf = (stars: number) =>
+      ratePosterior({
+        ...starsLikeThese(known, stars),
+        prior: known.prior,
+        detectedStars: [],
+      }).quantile(question.level);
+    expect(limitOf(needed)).toBeLessThanOrEqual(result.wantedLimit);
+    expect(limitOf(needed - 1)).toBeGreaterThan(result.wantedLimit);
+  });
+
+  it('of deeper curves sees more, and makes its maps once', async () => {
+    const planned = { kind: 'stars-like-these' as const, count: 8 };
+    const same = await ask<'forecast'>({ kind: 'forecast', name: 'As deep', planned });
+    const deeper = { ...planned, deeperByMag: 1.5 };
+    const { result, inputs } = await ask<'forecast'>({
+      kind: 'forecast',
+      name: 'Deeper',
+      planned: deeper,
+    });
+    expect(same.result.exposure).toBeCloseTo(lab.run.result?.exposure as number, 12);
+    expect(result.exposure).toBeGreaterThan(same.result.exposure);
+    expect(inputs.further).toHaveLength(1);
+    const maps = await CompletenessMapRow.count();
+    const again = await ask<'forecast'>({ kind: 'forecast', name: 'Once more', planned: deeper });
+    expect(again.result).toEqual(result);
+    expect(await CompletenessMapRow.count()).toBe(maps);
+  });
+
+  it('of targets with a curve makes one map for equal stars', async () => {
+    const before = await CompletenessMapRow.count();
+    const target = {
+      distancePc: 20,
+      distanceErrorPc: 0.3,
+      ageMyr: 45,
+      ageLowerMyr: 40,
+      ageUpperMyr: 52,
+      hostMag: 6.2,
+    };
+    const names = ['Plan 1', 'Plan 2', 'Plan 3'];
+    const { result } = await ask<'forecast'>({
+      kind: 'forecast',
+      name: 'Targets',
+      planned: {
+        kind: 'targets',
+        targets: names.map((name, i) => ({ name, ...target, ageMyr: i === 2 ? 41 : 45 })),
+        curve: {
+          band: 'H',
+          nSigma: 5,
+          separationArcsec: [0.15, 0.3, 0.6, 1.2, 2.5, 5],
+          contrastMag: [7, 9.5, 11.5, 13, 14, 14.2],
+        },
+      },
+    });
+    expect(await CompletenessMapRow.count()).toBe(before + 2);
+    const seen = new Map(result.gain.map(({ name, probability }) => [name, probability]));
+    expect(seen.get('Plan 1')).toBe(seen.get('Plan 2'));
+    expect(seen.get('Plan 3')).toBeGreaterThan(seen.get('Plan 1') as number);
+    expect(result.exposure).toBeCloseTo(
+      [...seen.values()].reduce((sum, c) => sum + c, 0),
+      12,
+    );
   });
 });
