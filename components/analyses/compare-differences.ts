@@ -1,6 +1,12 @@
 import { formatIndex } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
-import { describeLevel, describePopulation, describePrior } from '@/lib/inference';
+import {
+  describeBackground,
+  describeCandidates,
+  describeLevel,
+  describePopulation,
+  describePrior,
+} from '@/lib/inference';
 import { fromLogIndex } from '@/lib/population';
 import { formatRange } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
@@ -51,6 +57,12 @@ function lawRows(
   ];
 }
 
+/** What was done with candidates without an answer. */
+function candidateWords({ recipe, result }: ComparedRun): string {
+  if (!recipe.candidates || recipe.detections === 'none') return 'set aside';
+  return result.candidates ? describeCandidates(result.candidates) : 'none inside the ranges';
+}
+
 /** Every input in words, in the order in which a reader asks for it. */
 export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
   const row = (
@@ -63,6 +75,10 @@ export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
       side.recipe.detections === 'none'
         ? 'none counted'
         : `${countOf(side.result.counted.length)} counted`,
+    ),
+    row('Candidates', candidateWords),
+    row('Background', ({ recipe }) =>
+      recipe.background === undefined ? 'none' : describeBackground(recipe.background),
     ),
     row('Planet mass', ({ definition }) => massWords(definition), true),
     row(

@@ -46,9 +46,16 @@ export function priorOfLaw(law: PriorLaw, likelihood: Likelihood, present: RateP
     case 'gamma':
       return { law, shape: 1, rate: 1 };
     case 'tabulated':
-      // A table is uploaded, not chosen: what is there stays.
+      // A table comes from another run: without one what is there stays.
       return present;
   }
+}
+
+/** The prior after a change of the quantity; the posterior of another run was of the one before. */
+export function fitLikelihood(prior: RatePrior, before: Likelihood, after: Likelihood): RatePrior {
+  return prior.law === 'tabulated' && before !== after
+    ? { law: 'uniform', max: 1 }
+    : fitPrior(prior, after);
 }
 
 /** The nearest prior that the likelihood allows: a fraction ends at 1 and takes no gamma law. */

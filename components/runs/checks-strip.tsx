@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import { StateMark } from '@/components/ui/state-mark';
+import { describeCandidates, type StatedCandidates } from '@/lib/inference';
 import { formatPercent } from '@/lib/quantities/display';
 import type { RunInputs } from '@/lib/schemas/runs';
 
@@ -7,8 +8,8 @@ interface ChecksStripProps {
   inputs: RunInputs;
   shareOutsideMaps: number;
   shareFlaggedCooling: number;
-  /** Undecided candidates whose best values lie in the ranges now. */
-  undecidedInside: string[];
+  /** Candidates without an answer that may lie in the ranges now, and what is done with them. */
+  candidates: StatedCandidates | undefined;
   /** Set while the setting is another: what was judged for the run's own ranges says so. */
   ofRun?: number;
   /** Whether the run is calibrated. */
@@ -17,7 +18,7 @@ interface ChecksStripProps {
 
 /** What a reader should know before the number is used, in one line. */
 export function ChecksStrip(props: ChecksStripProps) {
-  const { inputs, shareOutsideMaps, shareFlaggedCooling, undecidedInside, ofRun } = props;
+  const { inputs, shareOutsideMaps, shareFlaggedCooling, candidates, ofRun } = props;
   const inRun = ofRun === undefined ? '' : `, run ${ofRun}`;
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
   const overlapping = entries - inputs.stars.length;
@@ -29,16 +30,13 @@ export function ChecksStrip(props: ChecksStripProps) {
           ? `${entries} entries, ${inputs.stars.length} stars: no star counted twice`
           : `${inputs.stars.length} stars, none in two surveys`}
       </StateMark>
-      {undecidedInside.length > 0 ? (
+      {candidates && candidates.entries.length > 0 ? (
         <StateMark kind="warn">
-          {undecidedInside.length === 1
-            ? '1 candidate inside the ranges still unvetted: '
-            : `${undecidedInside.length} candidates inside the ranges still unvetted: `}
-          {undecidedInside.join(', ')}
-          {inRun}
+          {candidates.entries.length === 1 ? 'Unvetted candidate: ' : 'Unvetted candidates: '}
+          {describeCandidates(candidates)}
         </StateMark>
       ) : (
-        <StateMark kind="ok">No unvetted candidate inside the ranges{inRun}</StateMark>
+        <StateMark kind="ok">No unvetted candidate inside the ranges</StateMark>
       )}
       {shareOutsideMaps > 0.0005 ? (
         <StateMark kind="warn">

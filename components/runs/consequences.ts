@@ -1,4 +1,4 @@
-import { fitPrior, type PriorLaw, priorLaws, priorOfLaw } from '@/components/analyses/prior-choice';
+import { type PriorLaw, priorLaws, priorOfLaw } from '@/components/analyses/prior-choice';
 import {
   answerFromView,
   type Likelihood,
@@ -11,7 +11,7 @@ import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { contract, type MovingAxis, weighContracted } from './contracted';
 import { askedOf, orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
-import type { LiveSetting } from './live-setting';
+import { type LiveSetting, withLikelihood } from './live-setting';
 import { TRACK, trackOf } from './tracks';
 
 /** The limit as a function of one control, all others standing still. */
@@ -79,32 +79,59 @@ export function traceLevel(
 /** What each option of each switch would give; undefined where it gives no answer. */
 export interface SwitchConsequences {
   detections: Record<AnalysisRecipe['detections'], number | undefined>;
+  candidates: Record<CandidateChoice, number | undefined>;
   likelihood: Record<Likelihood, number | undefined>;
   prior: Partial<Record<PriorLaw, number | undefined>>;
+}
+
+export type CandidateChoice = NonNullable<LiveSetting['candidates']>['treatment'] | 'none';
+
+/** The treatment with a rate that somebody gave, in the setting or in the run. */
+export function rateDependent(setting: LiveSetting, saved: LiveSetting): LiveSetting['candidates'] {
+  return [setting, saved].find((one) => one.candidates?.treatment === 'rate-dependent')?.candidates;
+}
+
+/** A prior of a law; a table is that of the run, since no control makes one. */
+export function priorChosen(law: PriorLaw, setting: LiveSetting, saved: LiveSetting) {
+  const isTable = law === 'tabulated' && saved.prior.law === law;
+  return priorOfLaw(law, setting.likelihood, isTable ? saved.prior : setting.prior);
+}
+
+/** The laws on offer: a table only where the run or the setting has one for this quantity. */
+export function lawsOffered(setting: LiveSetting, saved: LiveSetting): PriorLaw[] {
+  const own = saved.likelihood === setting.likelihood ? [saved.prior.law] : [];
+  return [...new Set([...priorLaws(setting.likelihood), setting.prior.law, ...own])];
 }
 
 export function switchConsequences(
   sample: LiveSample,
   view: PopulationView,
   setting: LiveSetting,
+  saved: LiveSetting,
   laws: PriorLaw[],
 ): SwitchConsequences {
-  const limit = (changes: Partial<LiveSetting>) =>
-    orNull(() => answerFromView(view, askedOf(sample, { ...setting, ...changes })).limit) ??
-    undefined;
+  const limit = (changed: LiveSetting) =>
+    orNull(() => answerFromView(view, askedOf(sample, changed)).limit) ?? undefined;
+  const followed = rateDependent(setting, saved);
+  const treated = (candidates: LiveSetting['candidates']) => limit({ ...setting, candidates });
   const ofLikelihood = (likelihood: Likelihood) =>
-    limit({ likelihood, prior: fitPrior(setting.prior, likelihood) });
+    limit(withLikelihood(setting, likelihood, saved));
   return {
-    detections: { counted: limit({ detections: 'counted' }), none: limit({ detections: 'none' }) },
+    detections: {
+      counted: limit({ ...setting, detections: 'counted' }),
+      none: limit({ ...setting, detections: 'none' }),
+    },
+    candidates: {
+      none: treated(undefined),
+      fixed: treated({ treatment: 'fixed' }),
+      'rate-dependent': followed && treated(followed),
+    },
     likelihood: {
       'host-fraction': ofLikelihood('host-fraction'),
       'mean-number': ofLikelihood('mean-number'),
     },
     prior: Object.fromEntries(
-      laws.map((law) => [
-        law,
-        limit({ prior: priorOfLaw(law, setting.likelihood, setting.prior) }),
-      ]),
+      laws.map((law) => [law, limit({ ...setting, prior: priorChosen(law, setting, saved) })]),
     ),
   };
 }
@@ -130,12 +157,12 @@ export function consequencesOf(
   const view = orNull(() => viewPopulation(sample.maps, sample.grid, setting.definition));
   if (view === null) return null;
   const levels = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
-  const laws = [...new Set([...priorLaws(setting.likelihood), setting.prior.law])];
+  const laws = lawsOffered(setting, saved);
   return {
     massIndex: linearTrace(sample, setting, saved, 'massIndex'),
     semiMajorAxisIndex: linearTrace(sample, setting, saved, 'semiMajorAxisIndex'),
     level: traceLevel(sample, view, setting, spread(levels, LEVEL_STEPS)),
-    switches: switchConsequences(sample, view, setting, laws),
+    switches: switchConsequences(sample, view, setting, saved, laws),
   };
 }
 

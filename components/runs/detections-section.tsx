@@ -2,7 +2,8 @@ import { FoldSection } from '@/components/ui/fold-section';
 import { JupiterMass } from '@/components/ui/notation';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import { formatAsymmetric } from '@/lib/quantities/display';
+import type { StatedCandidates } from '@/lib/inference';
+import { formatAsymmetric, formatPlain } from '@/lib/quantities/display';
 import type { DetectionView, RunInputs } from '@/lib/schemas/runs';
 
 interface DetectionsSectionProps {
@@ -12,13 +13,15 @@ interface DetectionsSectionProps {
   counted: string[];
   /** Names outside the ranges now. */
   outside: string[];
+  /** What the limit does with candidates without an answer. */
+  candidates: StatedCandidates | undefined;
   /** Set while the setting is another: undecided candidates were judged for the run's ranges. */
   ofRun?: number;
 }
 
 /** Each companion of the sample, and whether the limit counts it. */
 export function DetectionsSection(props: DetectionsSectionProps) {
-  const { companions, undecided, counted, outside, ofRun } = props;
+  const { companions, undecided, counted, outside, candidates, ofRun } = props;
   const answer = `${counted.length} counted of ${companions.length} confirmed, ${undecided.length} undecided`;
   return (
     <FoldSection number={4} title="Detections" context={answer} answer={answer}>
@@ -52,14 +55,9 @@ export function DetectionsSection(props: DetectionsSectionProps) {
             {undecided.map((candidate) => (
               <Row key={candidate.name}>
                 <Cell isRowHead>{candidate.name}</Cell>
-                <Cell isNumeric>–</Cell>
-                <Cell isNumeric>–</Cell>
-                <Cell>
-                  <StateMark kind={candidate.insideRanges === false ? 'waiting' : 'warn'}>
-                    {undecidedWords(candidate)}
-                    {ofRun !== undefined && `, run ${ofRun}`}
-                  </StateMark>
-                </Cell>
+                <Cell isNumeric>{plainOrDash(candidate.massMjup)}</Cell>
+                <Cell isNumeric>{plainOrDash(candidate.semiMajorAxisAu)}</Cell>
+                <Cell>{openStanding(candidate, candidates, ofRun)}</Cell>
               </Row>
             ))}
           </TableBody>
@@ -79,6 +77,31 @@ function standing(name: string, counted: string[], outside: string[]) {
   return (
     <StateMark kind="waiting">
       {outside.includes(name) ? 'outside the ranges' : 'set aside'}
+    </StateMark>
+  );
+}
+
+const plainOrDash = (value: number | null | undefined) =>
+  value == null ? '–' : formatAsymmetric(value, 0, 0);
+
+function openStanding(
+  candidate: RunInputs['undecided'][number],
+  stated: StatedCandidates | undefined,
+  ofRun: number | undefined,
+) {
+  const entry = stated?.entries.find(({ name }) => name === candidate.name);
+  if (stated?.treatment !== 'set-aside' && entry?.probability != null) {
+    return (
+      <StateMark kind="warn">
+        {`unvetted, counts with probability ${formatPlain(entry.probability)}`}
+        {stated?.treatment === 'rate-dependent' && ' at the reference rate'}
+      </StateMark>
+    );
+  }
+  return (
+    <StateMark kind={candidate.insideRanges === false ? 'waiting' : 'warn'}>
+      {undecidedWords(candidate)}
+      {ofRun !== undefined && `, run ${ofRun}`}
     </StateMark>
   );
 }

@@ -9,15 +9,20 @@ import {
   type AnswerSettings,
   answerFromView,
   equalTailedInterval,
-  type Likelihood,
+  type FrequentistCompanions,
+  frequentistBeside,
   limitAtLowerFloor,
   limitsByLevel,
+  otherLikelihood,
   type PopulationView,
   priorFor,
   type RatePosterior,
+  sayMissingColumn,
   TABLE_LEVELS,
+  whyNoColumn,
 } from '@/lib/inference';
 import type { RateAnswer, RunResult } from '@/lib/schemas/runs';
+import type { Beside } from './beside-table';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
 
@@ -41,19 +46,30 @@ export interface LiveAnswer {
   zero: LimitAnswer;
   /** Two more posteriors: made when the table asks for them, and then kept. */
   levels(): RunResult['levels'];
+  /** Why the table has no column for the other quantity; null: it has one. */
+  missingColumn: string | null;
+  /** Limits without a prior: made when asked for, and then kept. */
+  beside(): Beside;
   /** Log-uniform prior: the limit at a tenth of its floor. */
   atTenthOfFloor: number | null;
 }
 
 /** The part of a setting that a view of the population does not hold. */
 export function askedOf(sample: LiveSample, setting: LiveSetting): AnswerSettings {
+  const isAllSetAside = setting.detections === 'none';
+  const { candidates, background } = setting;
   return {
     likelihood: setting.likelihood,
     prior: setting.prior,
-    detections: setting.detections === 'none' ? [] : sample.companions,
+    detections: isAllSetAside ? [] : sample.companions,
+    candidates: candidates && !isAllSetAside ? { ...candidates, open: sample.open } : null,
+    ...(background !== undefined && { background }),
     level: setting.credibleLevel,
   };
 }
+
+/** Neither companions nor candidates count. */
+const SET_ASIDE = { detections: [], candidates: null } satisfies Partial<AnswerSettings>;
 
 /**
  * Limits, posteriors and the table of levels of a setting.
@@ -69,22 +85,20 @@ export function liveAnswer(
   const asked = askedOf(sample, setting);
   const full = answerFromView(view, asked);
   const none =
-    full.counted.length === 0 ? full : answerFromView(view, { ...asked, detections: [] });
+    full.counted.length + full.undecided.length === 0
+      ? full
+      : answerFromView(view, { ...asked, ...SET_ASIDE });
   const top = rateAxisMax([full.limit, none.limit], full.posterior.support[1]);
   return {
     full,
     answer: sumUp(full, top),
     zero: sumUp(none, top),
     levels: once(() => tableOfLevels(view, asked, full, none)),
-    atTenthOfFloor: limitAtLowerFloor(
-      {
-        likelihood: asked.likelihood,
-        prior: asked.prior,
-        completeness: view.completenessPerStar ?? Float64Array.of(view.exposure),
-        detectedStars: full.counted.map(({ star }) => star),
-      },
-      asked.level,
+    missingColumn: sayMissingColumn(full.question),
+    beside: once(() =>
+      asStored(frequentistBeside(full.question, asked.level, full.posterior), asked.level),
     ),
+    atTenthOfFloor: limitAtLowerFloor(full.question, asked.level),
   };
 }
 
@@ -98,6 +112,17 @@ function sumUp({ posterior, limit, setByPrior }: Answer, top: number): LimitAnsw
     isSetByPrior: setByPrior,
     curve,
     prior: samplePrior(posterior, curve.rate),
+  };
+}
+
+/** Limits without a prior in the shape in which a run keeps them. */
+function asStored(beside: FrequentistCompanions, level: number): Beside {
+  return {
+    rows: beside.rows.map(({ name, sides, lower, upper, isApproximate, source }) => ({
+      ...{ name, upper, level, isApproximate, source },
+      lower: sides === 'one-sided' ? null : lower,
+    })),
+    sentence: beside.sentence,
   };
 }
 
@@ -119,23 +144,18 @@ export function savedAnswer(answer: RateAnswer): LimitAnswer {
   };
 }
 
-const otherLikelihood: Record<Likelihood, Likelihood> = {
-  'host-fraction': 'mean-number',
-  'mean-number': 'host-fraction',
-};
-
 function tableOfLevels(
   view: PopulationView,
   asked: AnswerSettings,
   full: Answer,
   none: Answer,
 ): RunResult['levels'] {
-  const likelihood = otherLikelihood[asked.likelihood];
+  const likelihood = otherLikelihood(asked.likelihood);
   const prior = priorFor(asked.prior, likelihood);
-  const other = (detections: AnswerSettings['detections']) =>
-    prior === null
+  const other = (changes: Partial<AnswerSettings>) =>
+    prior === null || whyNoColumn(full.question, likelihood) !== null
       ? null
-      : orNull(() => answerFromView(view, { ...asked, likelihood, prior, detections }));
+      : orNull(() => answerFromView(view, { ...asked, ...changes, likelihood, prior }));
   const levels = TABLE_LEVELS.some((level) => Math.abs(level - asked.level) < 1e-9)
     ? [...TABLE_LEVELS]
     : [...TABLE_LEVELS, asked.level].sort((a, b) => a - b);
@@ -145,8 +165,8 @@ function tableOfLevels(
     );
   const own = column(full.posterior);
   const ownZero = column(none.posterior);
-  const theirs = column(other(asked.detections)?.posterior);
-  const theirsZero = column(other([])?.posterior);
+  const theirs = column(other({})?.posterior);
+  const theirsZero = column(other(SET_ASIDE)?.posterior);
   const isFraction = asked.likelihood === 'host-fraction';
   return levels.map((level, row) => ({
     level,

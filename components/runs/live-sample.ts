@@ -1,5 +1,5 @@
 import type { StarMaps } from '@/components/hooks/use-run-maps';
-import type { Detection } from '@/lib/inference';
+import type { Detection, OpenCandidate } from '@/lib/inference';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
 
@@ -11,6 +11,8 @@ export interface LiveSample {
   maps: Uint16Array;
   /** Confirmed companions of these stars, inside the ranges or not. */
   companions: Detection[];
+  /** Candidates without an answer, inside the ranges or not. */
+  open: OpenCandidate[];
 }
 
 export function sampleOf(inputs: RunInputs, maps: StarMaps): LiveSample {
@@ -22,6 +24,11 @@ export function sampleOf(inputs: RunInputs, maps: StarMaps): LiveSample {
     companions: inputs.companions.flatMap(({ starId, name, massMjup, semiMajorAxisAu }) => {
       const star = indexOf.get(starId);
       return star === undefined ? [] : [{ star, name, massMjup, semiMajorAxisAu }];
+    }),
+    open: inputs.undecided.flatMap((one) => {
+      const star = indexOf.get(one.starId ?? '');
+      const { name, probability = null, massMjup = null, semiMajorAxisAu = null } = one;
+      return star === undefined ? [] : [{ star, name, probability, massMjup, semiMajorAxisAu }];
     }),
   };
 }
@@ -39,13 +46,16 @@ export function restrictSample(
     maps.set(sample.maps.subarray(from * size, (from + 1) * size), to * size);
     movedTo.set(from, to);
   });
+  const moved = <Item extends { star: number }>(items: Item[]): Item[] =>
+    items.flatMap((item) => {
+      const star = movedTo.get(item.star);
+      return star === undefined ? [] : [{ ...item, star }];
+    });
   return {
     grid: sample.grid,
     stars: kept.map((index) => sample.stars[index]),
     maps,
-    companions: sample.companions.flatMap((companion) => {
-      const star = movedTo.get(companion.star);
-      return star === undefined ? [] : [{ ...companion, star }];
-    }),
+    companions: moved(sample.companions),
+    open: moved(sample.open),
   };
 }

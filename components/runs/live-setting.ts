@@ -1,6 +1,7 @@
-import type { RateQuantity } from '@/lib/inference';
+import { fitLikelihood } from '@/components/analyses/prior-choice';
+import type { RatePrior, RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
-import { type AnalysisRecipe, type RatePriorInput, ratePriorSchema } from '@/lib/schemas/analyses';
+import { type AnalysisRecipe, analysisRecipeSchema, ratePriorSchema } from '@/lib/schemas/analyses';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 
 /** Everything that follows a control at once, without a run. */
@@ -9,7 +10,11 @@ export interface LiveSetting {
   credibleLevel: number;
   detections: AnalysisRecipe['detections'];
   likelihood: AnalysisRecipe['likelihood'];
-  prior: RatePriorInput;
+  prior: RatePrior;
+  /** Left out: candidates without an answer are set aside. */
+  candidates?: AnalysisRecipe['candidates'];
+  /** Expected number of false detections among those counted; mean number only. */
+  background?: number;
 }
 
 export function quantityOf(likelihood: LiveSetting['likelihood']): RateQuantity {
@@ -22,8 +27,32 @@ export function settingOfRecipe(
   recipe: AnalysisRecipe,
   definition: PowerLawDefinition,
 ): LiveSetting {
-  const { credibleLevel, detections, likelihood, prior } = recipe;
-  return { definition, credibleLevel, detections, likelihood, prior };
+  const { credibleLevel, detections, likelihood, prior, candidates, background } = recipe;
+  return {
+    ...{ definition, credibleLevel, detections, likelihood, prior },
+    ...(candidates && { candidates }),
+    ...(background !== undefined && { background }),
+  };
+}
+
+/** The setting with another quantity: prior and background that it does not allow are left. */
+export function withLikelihood(
+  setting: LiveSetting,
+  likelihood: LiveSetting['likelihood'],
+  saved: LiveSetting,
+): LiveSetting {
+  const { background: _left, ...kept } = setting;
+  const background = setting.background ?? saved.background;
+  const prior =
+    saved.likelihood === likelihood && saved.prior.law === 'tabulated'
+      ? saved.prior
+      : fitLikelihood(setting.prior, setting.likelihood, likelihood);
+  return {
+    ...kept,
+    likelihood,
+    prior,
+    ...(likelihood === 'mean-number' && background !== undefined && { background }),
+  };
 }
 
 export function isSameSetting(one: LiveSetting, other: LiveSetting): boolean {
@@ -32,6 +61,8 @@ export function isSameSetting(one: LiveSetting, other: LiveSetting): boolean {
     Math.abs(one.credibleLevel - other.credibleLevel) < 1e-9 &&
     one.detections === other.detections &&
     one.likelihood === other.likelihood &&
+    candidatesToText(one.candidates) === candidatesToText(other.candidates) &&
+    one.background === other.background &&
     priorToText(one.prior) === priorToText(other.prior)
   );
 }
@@ -64,6 +95,8 @@ export function settingToQuery(setting: LiveSetting, saved: LiveSetting): Record
   }
   if (setting.detections !== saved.detections) query.det = setting.detections;
   if (setting.likelihood !== saved.likelihood) query.likelihood = setting.likelihood;
+  const candidates = candidatesToText(setting.candidates);
+  if (candidates !== candidatesToText(saved.candidates)) query.cand = candidates;
   if (priorToText(setting.prior) !== priorToText(saved.prior)) {
     query.prior = priorToText(setting.prior);
   }
@@ -95,15 +128,19 @@ export function definitionToQuery(
 /** Reads a setting from an address; a part that cannot be read keeps the saved value. */
 export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting {
   const level = Number(query.level);
+  const asked =
+    query.likelihood === 'mean-number' || query.likelihood === 'host-fraction'
+      ? withLikelihood(saved, query.likelihood, saved)
+      : saved;
+  const candidates = candidatesFromText(query.cand, saved.candidates);
+  const { candidates: _saved, ...rest } = asked;
   return {
+    ...rest,
+    ...(candidates && { candidates }),
     definition: definitionFromQuery(query, saved.definition),
     credibleLevel: level > 0 && level < 1 ? level : saved.credibleLevel,
     detections: query.det === 'none' || query.det === 'counted' ? query.det : saved.detections,
-    likelihood:
-      query.likelihood === 'mean-number' || query.likelihood === 'host-fraction'
-        ? query.likelihood
-        : saved.likelihood,
-    prior: priorFromText(query.prior) ?? saved.prior,
+    prior: priorFromText(query.prior) ?? asked.prior,
   };
 }
 
@@ -135,8 +172,29 @@ function readIndex(text: string | undefined): number | undefined {
   return Math.abs(index) <= 10 ? index : undefined;
 }
 
+/** "none", "fixed", "rate:0.2": what is done with candidates without an answer. */
+function candidatesToText(candidates: LiveSetting['candidates']): string {
+  if (candidates === undefined) return 'none';
+  return candidates.treatment === 'fixed' ? 'fixed' : `rate:${candidates.referenceRate}`;
+}
+
+const candidatesSchema = analysisRecipeSchema.shape.candidates;
+
+function candidatesFromText(
+  text: string | undefined,
+  saved: LiveSetting['candidates'],
+): LiveSetting['candidates'] {
+  if (text === 'none') return undefined;
+  const asked =
+    text === 'fixed'
+      ? { treatment: 'fixed' }
+      : { treatment: 'rate-dependent', referenceRate: Number(text?.replace('rate:', '')) };
+  const parsed = candidatesSchema.safeParse(asked);
+  return parsed.success ? parsed.data : saved;
+}
+
 /** "uniform:1", "log-uniform:0.001:1", "beta:0.5:0.5": the law, then its numbers. */
-export function priorToText(prior: RatePriorInput): string {
+export function priorToText(prior: RatePrior): string {
   switch (prior.law) {
     case 'uniform':
       return `uniform:${prior.max}`;
@@ -150,11 +208,11 @@ export function priorToText(prior: RatePriorInput): string {
       return `beta:${prior.a}:${prior.b}`;
     case 'tabulated':
       // Too long for an address: whoever opens it gets the run's own prior.
-      return 'tabulated';
+      return `tabulated:${prior.source ?? prior.value.length}`;
   }
 }
 
-export function priorFromText(text: string | undefined): RatePriorInput | undefined {
+export function priorFromText(text: string | undefined): RatePrior | undefined {
   if (text === undefined) return undefined;
   const [law, ...rest] = text.split(':');
   const [first, second] = rest.map(Number);

@@ -68,6 +68,7 @@ export function reachTo(curve: RateCurve, top: number): RateCurve {
 
 /** Largest rate that a prior allows. */
 function priorEnd(prior: LiveSetting['prior']): number {
+  if (prior.law === 'tabulated') return prior.value[prior.value.length - 1];
   return 'max' in prior && prior.max !== undefined ? prior.max : Number.POSITIVE_INFINITY;
 }
 
@@ -86,6 +87,8 @@ function priorLabel(prior: LiveSetting['prior'], quantity: RateQuantity): string
     case 'beta':
       return `beta (${formatPlain(prior.a)}, ${formatPlain(prior.b)})`;
     case 'tabulated':
-      return 'tabulated';
+      return prior.source === undefined
+        ? 'tabulated'
+        : `posterior of ${prior.source.split(',')[0]}`;
   }
 }

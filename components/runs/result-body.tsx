@@ -95,6 +95,7 @@ export function ResultBody(props: ResultBodyProps) {
           grid={map}
           consequences={tracks.answer ?? undefined}
           profiles={profiles}
+          candidates={inputs.undecided.length}
           countedLabel={insideCount === 1 ? '1 vetted' : `${insideCount} vetted`}
           onSetting={onSetting}
         />
@@ -115,9 +116,7 @@ export function ResultBody(props: ResultBodyProps) {
         inputs={inputs}
         shareOutsideMaps={shown.shareOutsideMaps}
         shareFlaggedCooling={result.shareFlaggedCooling}
-        undecidedInside={inputs.undecided
-          .filter((candidate) => candidate.insideRanges !== false)
-          .map(({ name }) => name)}
+        candidates={shown.candidates}
         ofRun={shown.isLive ? run.number : undefined}
         calibration={
           <CalibrationCheck

@@ -2,14 +2,7 @@
 
 import { type ReactNode, useState } from 'react';
 import { NumberEntry } from '@/components/analyses/number-entry';
-import {
-  fitPrior,
-  likelihoodOptions,
-  type PriorLaw,
-  priorLaws,
-  priorOfLaw,
-  priorOptions,
-} from '@/components/analyses/prior-choice';
+import { likelihoodOptions, type PriorLaw, priorOptions } from '@/components/analyses/prior-choice';
 import { RangeControl } from '@/components/charts/range-control';
 import { TraceSlider } from '@/components/charts/trace-slider';
 import { AxisRange, formatIndex, MassRange } from '@/components/populations/law-notation';
@@ -21,8 +14,9 @@ import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
-import type { Consequences } from './consequences';
-import { type LiveSetting, tidy } from './live-setting';
+import { CandidateSwitch } from './candidate-switch';
+import { type Consequences, lawsOffered, priorChosen } from './consequences';
+import { type LiveSetting, tidy, withLikelihood } from './live-setting';
 import { TRACK, trackOf } from './tracks';
 
 interface ResultConsoleProps {
@@ -33,6 +27,8 @@ interface ResultConsoleProps {
   /** Undefined until the maps of the run are there. */
   consequences?: Consequences;
   profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
+  /** Candidates without an answer in the sample. */
+  candidates: number;
   /** "2 vetted": what counting them means here. */
   countedLabel: string;
   onSetting(setting: LiveSetting): void;
@@ -81,7 +77,7 @@ export function ResultConsole(props: ResultConsoleProps) {
     );
   };
   const [levelMin, levelMax] = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
-  const laws = [...new Set([...priorLaws(setting.likelihood), setting.prior.law])];
+  const laws = lawsOffered(setting, saved);
 
   return (
     <Console
@@ -105,12 +101,20 @@ export function ResultConsole(props: ResultConsoleProps) {
               },
             ]}
           />
+          {props.candidates > 0 && (
+            <div className={`max-md:w-full ${further}`}>
+              <CandidateSwitch
+                setting={setting}
+                saved={saved}
+                consequence={(choice) => consequence(consequences?.switches.candidates[choice])}
+                onSetting={onSetting}
+              />
+            </div>
+          )}
           <ConsequenceSwitch
             label="Likelihood"
             value={setting.likelihood}
-            onChange={(likelihood) =>
-              onSetting({ ...setting, likelihood, prior: fitPrior(setting.prior, likelihood) })
-            }
+            onChange={(likelihood) => onSetting(withLikelihood(setting, likelihood, saved))}
             options={withConsequences(likelihoodOptions, (value) =>
               consequence(consequences?.switches.likelihood[value]),
             )}
@@ -127,12 +131,7 @@ export function ResultConsole(props: ResultConsoleProps) {
                 )
               }
               value={setting.prior.law}
-              onChange={(law) =>
-                onSetting({
-                  ...setting,
-                  prior: priorOfLaw(law, setting.likelihood, setting.prior),
-                })
-              }
+              onChange={(law) => onSetting({ ...setting, prior: priorChosen(law, setting, saved) })}
               options={withConsequences(priorOptions(laws).map(shortened), (value) =>
                 consequence(consequences?.switches.prior[value]),
               )}

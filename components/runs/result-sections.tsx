@@ -8,6 +8,7 @@ import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import { BesideTable } from './beside-table';
 import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
 import type { LiveSample } from './live-sample';
@@ -35,6 +36,7 @@ interface ResultSectionsProps {
 export const ResultSections = memo(function ResultSections(props: ResultSectionsProps) {
   const { inputs, result, runNumber, sample, shown, map, depth, definition } = props;
   const { quantity, setting } = shown;
+  const beside = shown.beside();
   const ofRun = shown.isLive ? runNumber : undefined;
   return (
     <>
@@ -60,15 +62,18 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
                   <MassRange definition={setting.definition} />,{' '}
                   <AxisRange definition={setting.definition} />;{' '}
                   {describePrior(setting.prior, quantity)}.
+                  {shown.missingColumn !== null && ` There is ${shown.missingColumn}.`}
                 </>
               }
             />
+            {beside && <BesideTable beside={beside} quantity={quantity} />}
           </FoldSection>
           <DetectionsSection
             companions={inputs.companions}
             undecided={inputs.undecided}
             counted={shown.counted.map(({ name }) => name)}
             outside={shown.outside}
+            candidates={shown.candidates}
             ofRun={ofRun}
           />
         </div>

@@ -1,7 +1,14 @@
 import type { ReactNode } from 'react';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
-import { describeLevel, describePrior, type RateQuantity } from '@/lib/inference';
+import {
+  describeBackground,
+  describeCandidates,
+  describeLevel,
+  describePrior,
+  type RateQuantity,
+  type StatedCandidates,
+} from '@/lib/inference';
 import { formatPercent, formatRate, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import { EditableRange } from './editable-range';
@@ -100,6 +107,7 @@ interface ConditionInputs {
   quantity: RateQuantity;
   stars: number;
   counted: string[];
+  candidates: StatedCandidates | undefined;
   outside: string[];
   merged: string[];
   cooling: string;
@@ -122,8 +130,14 @@ export function conditionRows(inputs: ConditionInputs): { name: string; value: R
           : `mean number of planets, Poisson over ${stars} stars`,
     },
     { name: 'Detections', value: detectionWords(inputs) },
-    { name: 'Cooling', value: inputs.cooling },
   ];
+  if (inputs.candidates) {
+    rows.push({ name: 'Candidates', value: describeCandidates(inputs.candidates) });
+  }
+  if (setting.background !== undefined) {
+    rows.push({ name: 'Background', value: describeBackground(setting.background) });
+  }
+  rows.push({ name: 'Cooling', value: inputs.cooling });
   if (shareOutsideMaps > 0.0005) {
     rows.push({
       name: 'Outside',

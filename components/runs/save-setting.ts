@@ -1,7 +1,11 @@
 import { copyAnalysis, updateAnalysis } from '@/components/hooks/use-analyses';
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { startRun } from '@/components/hooks/use-runs';
-import type { AnalysisView } from '@/lib/schemas/analyses';
+import {
+  type AnalysisRecipe,
+  type AnalysisView,
+  analysisRecipeSchema,
+} from '@/lib/schemas/analyses';
 import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
 import { isSameDefinition, type LiveSetting } from './live-setting';
 
@@ -25,9 +29,19 @@ export async function saveAndRun(
       ? analysis.population
       : await storePopulation(collaboration, analysis.population, setting);
   await updateAnalysis(collaboration, analysis.key, {
-    recipe: { ...analysis.recipe, ...asked, populationId: population.id },
+    recipe: analysisRecipeSchema.parse({
+      ...withoutOptions(analysis.recipe),
+      ...asked,
+      populationId: population.id,
+    }),
   });
   await startRun(collaboration, analysis.key);
+}
+
+/** A setting that has neither candidates nor a background takes them out of the recipe. */
+function withoutOptions(recipe: AnalysisRecipe) {
+  const { candidates: _candidates, background: _background, ...rest } = recipe;
+  return rest;
 }
 
 /** The same on a copy, which belongs to whoever made it: its key. */

@@ -1,6 +1,7 @@
-import type { RateQuantity } from '@/lib/inference';
+import type { RateQuantity, StatedCandidates } from '@/lib/inference';
 import { isInside } from '@/lib/population';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { Beside } from './beside-table';
 import { type LimitAnswer, savedAnswer } from './live-answer';
 import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
 import type { LiveOutcome } from './use-live-result';
@@ -15,6 +16,12 @@ export interface ShownResult {
   levels(): RunResult['levels'];
   atTenthOfFloor: number | null;
   counted: { name: string; starId: string }[];
+  /** Candidates without an answer, and what the limit did with them; undefined: there are none. */
+  candidates: StatedCandidates | undefined;
+  /** Why the table of limits lacks a column; null: it has both. */
+  missingColumn: string | null;
+  /** Limits without a prior; null where the run is from before they were kept. */
+  beside(): Beside | null;
   /** Names of confirmed companions outside the ranges, and of second ones of a star. */
   outside: string[];
   merged: string[];
@@ -47,6 +54,9 @@ export function showResult(
       zero: savedAnswer(result.zero),
       levels: () => result.levels,
       atTenthOfFloor: result.atTenthOfFloor,
+      candidates: storedCandidates(inputs, result),
+      missingColumn: storedReason(result),
+      beside: () => result.beside,
       counted: result.counted,
       outside: result.outside.map(({ name }) => name),
       merged: result.mergedNames,
@@ -66,6 +76,9 @@ export function showResult(
     zero: live.zero,
     levels: live.levels,
     atTenthOfFloor: live.atTenthOfFloor,
+    candidates: liveCandidates(inputs, setting, full.undecided),
+    missingColumn: live.missingColumn,
+    beside: live.beside,
     counted: full.counted.map(({ name, star }) => ({ name, starId: inputs.stars[star].starId })),
     outside: inputs.companions
       .filter((one) => !isInside(setting.definition, one.massMjup, one.semiMajorAxisAu))
@@ -80,4 +93,42 @@ export function showResult(
     isLive,
     isOfRun: false,
   };
+}
+
+function setAside(
+  inputs: RunInputs,
+  isPossible: (one: RunInputs['undecided'][number]) => boolean,
+): StatedCandidates | undefined {
+  if (inputs.undecided.length === 0) return undefined;
+  const entries = inputs.undecided
+    .filter(isPossible)
+    .map(({ name, probability = null }) => ({ name, probability }));
+  return { treatment: 'set-aside', entries };
+}
+
+function storedCandidates(inputs: RunInputs, { candidates }: RunResult) {
+  return candidates ?? setAside(inputs, ({ insideRanges }) => insideRanges !== false);
+}
+
+/** By the present ranges, where a candidate's place is known. */
+function liveCandidates(
+  inputs: RunInputs,
+  { candidates, detections, definition }: LiveSetting,
+  counted: StatedCandidates['entries'],
+): StatedCandidates | undefined {
+  if (candidates && detections !== 'none') {
+    const referenceRate = candidates.treatment === 'fixed' ? null : candidates.referenceRate;
+    return { treatment: candidates.treatment, referenceRate, entries: counted };
+  }
+  return setAside(inputs, ({ massMjup, semiMajorAxisAu, insideRanges }) =>
+    massMjup == null || semiMajorAxisAu == null
+      ? insideRanges !== false
+      : isInside(definition, massMjup, semiMajorAxisAu),
+  );
+}
+
+const TABLE = 'Table of limits: ';
+
+function storedReason({ statement }: RunResult): string | null {
+  return statement.conditions.find((one) => one.startsWith(TABLE))?.slice(TABLE.length) ?? null;
 }

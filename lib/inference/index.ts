@@ -123,7 +123,7 @@ export {
   predictCounts,
 } from './prediction';
 export type { AskedColumns } from './prior-for';
-export { priorFor, whyNoColumn } from './prior-for';
+export { otherLikelihood, priorFor, sayMissingColumn, whyNoColumn } from './prior-for';
 export type { LimitingEnd, SettledIndices } from './settled-indices';
 export { freeIndices } from './settled-indices';
 export { withoutStars } from './star-selection';

@@ -25,6 +25,11 @@ export function priorFor(prior: RatePrior, likelihood: Likelihood): RatePrior | 
   }
 }
 
+const columnNames: Record<Likelihood, string> = {
+  'host-fraction': 'no fraction of stars beside the mean number',
+  'mean-number': 'no mean number beside the fraction of stars',
+};
+
 /** What decides whether a question has an answer of either quantity. */
 export type AskedColumns = Pick<
   RateQuestion,
@@ -60,4 +65,17 @@ export function whyNoColumn(asked: AskedColumns, likelihood: Likelihood): string
     return 'the prior has no counterpart for it';
   }
   return likelihood === 'host-fraction' ? whyNoFraction(asked) : null;
+}
+
+export function otherLikelihood(likelihood: Likelihood): Likelihood {
+  return likelihood === 'host-fraction' ? 'mean-number' : 'host-fraction';
+}
+
+/** Why the table beside an answer lacks the other quantity, as a sentence without a full stop. */
+export function sayMissingColumn(
+  question: AskedColumns & { likelihood: Likelihood },
+): string | null {
+  const other = otherLikelihood(question.likelihood);
+  const why = whyNoColumn(question, other);
+  return why === null ? null : `${columnNames[other]}: ${why}`;
 }

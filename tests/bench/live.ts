@@ -26,7 +26,7 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
   };
   const view = viewPopulation(maps, GRID, POPULATION);
   const look = () => viewPopulation(maps, GRID, POPULATION);
-  const sample: LiveSample = { grid: GRID, stars: [], maps, companions: detections };
+  const sample: LiveSample = { grid: GRID, stars: [], maps, companions: detections, open: [] };
   const setting = {
     definition: POPULATION,
     credibleLevel: LEVEL,

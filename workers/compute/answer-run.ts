@@ -13,6 +13,7 @@ import {
   type RatePrior,
   type RateQuestion,
   ratePosterior,
+  sayMissingColumn,
   seenBy,
   TABLE_LEVELS,
   upperLimit,
@@ -118,7 +119,7 @@ export default function answerRun(input: AnswerRunInput): AnswerRunOutput {
     atTenthOfFloor: limitAtLowerFloor(question, level),
     cutAt: posterior.cutAt,
     levels: tabulateLevels(input, view),
-    missingColumn: sayMissing(question),
+    missingColumn: sayMissingColumn(question),
     beside: standBeside(question, level, posterior),
     meanMap: averageMaps(input),
     depth: stackDepth(input),
@@ -170,21 +171,6 @@ function refuseUnseen(input: AnswerRunInput, completeness: Float64Array): void {
     `The candidate ${candidateNames[lost]} was found where the map of its star says nothing can be ` +
       `seen: ${check}, or set candidates aside`,
   );
-}
-
-function otherLikelihood(likelihood: Likelihood): Likelihood {
-  return likelihood === 'host-fraction' ? 'mean-number' : 'host-fraction';
-}
-
-const columnNames: Record<Likelihood, string> = {
-  'host-fraction': 'no fraction of stars beside the mean number',
-  'mean-number': 'no mean number beside the fraction of stars',
-};
-
-function sayMissing(question: RateQuestion): string | null {
-  const other = otherLikelihood(question.likelihood);
-  const why = whyNoColumn(question, other);
-  return why && `${columnNames[other]}: ${why}`;
 }
 
 function standBeside(

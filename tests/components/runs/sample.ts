@@ -43,5 +43,6 @@ export function buildSample(stars = 40): LiveSample {
       { star: stars - 1, name: 'inside b', massMjup: 8, semiMajorAxisAu: 60 },
       { star: stars - 2, name: 'outside b', massMjup: 60, semiMajorAxisAu: 60 },
     ],
+    open: [],
   };
 }
