@@ -14,15 +14,19 @@ import { defineMember, MemberRow } from './member';
 import { definePerson, PersonRow } from './person';
 import { definePopulation, PopulationRow } from './population';
 import { defineRun, RunRow } from './run';
+import { defineSample, SampleRow } from './sample';
 import { defineSession, SessionRow } from './session';
 import { defineStar, StarRow } from './star';
+import { defineStarMatch, StarMatchRow } from './star-match';
 import { defineStudy, StudyRow } from './study';
 import { defineSurvey, SurveyRow } from './survey';
 import { defineTarget, TargetRow } from './target';
 import { defineUpload, UploadRow } from './upload';
+import { AdoptedValueRow, defineValueTable, ValueTableRow } from './value-table';
 
 export {
   AccessTokenRow,
+  AdoptedValueRow,
   AnalysisRow,
   AuditEntryRow,
   CollaborationRow,
@@ -36,12 +40,15 @@ export {
   PersonRow,
   PopulationRow,
   RunRow,
+  SampleRow,
   SessionRow,
+  StarMatchRow,
   StarRow,
   StudyRow,
   SurveyRow,
   TargetRow,
   UploadRow,
+  ValueTableRow,
 };
 
 /** All associations stand here, so that no model imports another. Each names its alias and column. */
@@ -79,6 +86,8 @@ function defineModels(sequelize: Sequelize): void {
   defineSurvey(sequelize);
   defineUpload(sequelize);
   defineStar(sequelize);
+  defineStarMatch(sequelize);
+  defineValueTable(sequelize);
   defineTarget(sequelize);
   defineContrastCurve(sequelize);
   defineCoolingTable(sequelize);
@@ -87,6 +96,7 @@ function defineModels(sequelize: Sequelize): void {
   definePopulation(sequelize);
   defineAnalysis(sequelize);
   defineJob(sequelize);
+  defineSample(sequelize);
   defineRun(sequelize);
   defineStudy(sequelize);
   defineAuditEntry(sequelize);

@@ -14,6 +14,8 @@ export class StarRow extends Model<InferAttributes<StarRow>, InferCreationAttrib
   declare name: string;
   declare foldedName: string;
   declare gaiaDr3Id: CreationOptional<string | null>;
+  /** The star that this one was found to be; its targets are listed there. */
+  declare mergedInto: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -25,6 +27,7 @@ export function defineStar(sequelize: Sequelize): void {
       name: DataTypes.TEXT,
       foldedName: DataTypes.TEXT,
       gaiaDr3Id: DataTypes.TEXT,
+      mergedInto: DataTypes.UUID,
       createdAt: DataTypes.DATE,
     },
     {

@@ -6,6 +6,7 @@ import {
   Model,
   type Sequelize,
 } from 'sequelize';
+import type { MatchEvidence } from '@/lib/schemas/stars';
 
 export type MapState = 'none' | 'waiting' | 'ready' | 'failed';
 
@@ -18,6 +19,8 @@ export class TargetRow extends Model<
   declare collaborationId: string;
   declare surveyId: string;
   declare starId: string;
+  /** How it was found to be a star that another survey had brought; null for the first. */
+  declare starEvidence: CreationOptional<MatchEvidence | null>;
   declare uploadId: CreationOptional<string | null>;
   declare name: string;
   declare foldedName: string;
@@ -55,6 +58,7 @@ export function defineTarget(sequelize: Sequelize): void {
       collaborationId: DataTypes.UUID,
       surveyId: DataTypes.UUID,
       starId: DataTypes.UUID,
+      starEvidence: DataTypes.JSONB,
       uploadId: DataTypes.UUID,
       name: DataTypes.TEXT,
       foldedName: DataTypes.TEXT,

@@ -75,10 +75,20 @@ export const permissions = {
     ['no', 'yes', 'yes', 'no', 'yes'],
     'Ask a statistician or a collaborator to import it',
   ),
+  'save-sample': row(
+    'save a version of a sample',
+    ['own', 'own', 'yes', 'own', 'yes'],
+    'Save it as a new sample of your own',
+  ),
   combine: row(
     'resolve overlaps and combine surveys',
     ['no', 'yes', 'yes', 'no', 'yes'],
     'Ask a statistician',
+  ),
+  'adopt-values': row(
+    'adopt ages and distances',
+    ['no', 'lead', 'yes', 'no', 'yes'],
+    'Ask a statistician, or the lead of a survey that lists the star',
   ),
   vet: row(
     'vet candidates',

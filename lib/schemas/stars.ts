@@ -1,0 +1,257 @@
+import { z } from 'zod';
+import { idSchema, lineSchema, moment, positiveSchema } from './common';
+import { companionSchema, curveSchema } from './surveys';
+
+const errorSchema = z.number().finite().min(0);
+
+/** How a star was found to be one that was known. */
+export const matchEvidenceSchema = z.object({
+  by: z.enum(['identifier', 'name', 'position']),
+  /** The identifier or name that two tables share. */
+  found: z.string().optional(),
+  /** At the common epoch, after proper motion. */
+  separationArcsec: z.number().optional(),
+  epochYr: z.number().optional(),
+  /** How many of the two have a proper motion. */
+  motions: z.number().int().min(0).max(2).optional(),
+  /** Larger over smaller; null where a distance is not known. */
+  distanceRatio: z.number().nullable().optional(),
+});
+export type MatchEvidence = z.infer<typeof matchEvidenceSchema>;
+
+export const matchStateSchema = z.enum(['proposed', 'confirmed', 'refused', 'undone']);
+export type MatchState = z.infer<typeof matchStateSchema>;
+
+export const adoptedQuantitySchema = z.enum(['age', 'distance']);
+export type AdoptedQuantity = z.infer<typeof adoptedQuantitySchema>;
+
+/** As the columns of a table of targets; a median, hard bounds, or both. */
+export const ageValueSchema = z
+  .strictObject({
+    ageMyr: positiveSchema.max(13_800).nullable(),
+    ageLowerMyr: positiveSchema.nullable().default(null),
+    ageUpperMyr: positiveSchema.nullable().default(null),
+    ageMinMyr: positiveSchema.nullable().default(null),
+    ageMaxMyr: positiveSchema.max(13_800).nullable().default(null),
+  })
+  .refine(({ ageMyr, ageMinMyr, ageMaxMyr }) => ageMyr !== null || (ageMinMyr && ageMaxMyr), {
+    message: 'an age, or a lower and an upper bound',
+  })
+  .refine(
+    ({ ageMyr, ageLowerMyr, ageUpperMyr, ageMinMyr, ageMaxMyr }) => {
+      const order = [ageMinMyr, ageLowerMyr, ageMyr, ageUpperMyr, ageMaxMyr].filter(
+        (value) => value !== null,
+      );
+      return order.every((value, i) => i === 0 || value >= order[i - 1]);
+    },
+    { message: 'bounds and errors around the age, in their order' },
+  );
+export type AgeValue = z.infer<typeof ageValueSchema>;
+
+export const distanceValueSchema = z
+  .strictObject({
+    distancePc: positiveSchema.nullable(),
+    distanceErrorPc: errorSchema.nullable().default(null),
+    parallaxMas: positiveSchema.nullable().default(null),
+    parallaxErrorMas: errorSchema.nullable().default(null),
+  })
+  .refine(({ distancePc, parallaxMas }) => distancePc !== null || parallaxMas !== null, {
+    message: 'a distance or a parallax',
+  });
+export type DistanceValue = z.infer<typeof distanceValueSchema>;
+
+const surveyRefSchema = z.object({ slug: z.string(), name: z.string(), position: z.number() });
+
+/** A star as one survey lists it. */
+export const starEntrySchema = z.object({
+  targetId: idSchema,
+  survey: surveyRefSchema,
+  name: z.string(),
+  otherNames: z.array(z.string()),
+  gaiaDr3Id: z.string().nullable(),
+  raDeg: z.number().nullable(),
+  decDeg: z.number().nullable(),
+  spectralType: z.string().nullable(),
+  movingGroup: z.string().nullable(),
+  hostMassMsun: z.number().nullable(),
+  age: ageValueSchema.nullable(),
+  distance: distanceValueSchema.nullable(),
+  reference: z.string().nullable(),
+  epochs: z.number(),
+  mapId: idSchema.nullable(),
+  mapState: z.enum(['none', 'waiting', 'ready', 'failed']),
+  mapFault: z.string().nullable(),
+  probability: z.number().nullable(),
+  leftOutReason: z.string().nullable(),
+  evidence: matchEvidenceSchema.nullable(),
+});
+export type StarEntry = z.infer<typeof starEntrySchema>;
+
+/** Where the value that maps rest on comes from. */
+export const valueSourceSchema = z.object({
+  kind: z.enum(['adopted', 'survey']),
+  /** "ages table 3, from HALYARD", or the survey's name. */
+  words: z.string(),
+  table: z.number().nullable(),
+});
+
+export const starSchema = z.object({
+  id: idSchema,
+  name: z.string(),
+  gaiaDr3Id: z.string().nullable(),
+  otherNames: z.array(z.string()),
+  entries: z.array(starEntrySchema),
+  age: z.object({ value: ageValueSchema, source: valueSourceSchema }).nullable(),
+  distance: z.object({ value: distanceValueSchema, source: valueSourceSchema }).nullable(),
+  /** How far the surveys' values lie apart, in sigmas; "differs" where none has an error. */
+  conflicts: z.object({
+    age: z.union([z.number(), z.literal('differs')]).nullable(),
+    distance: z.union([z.number(), z.literal('differs')]).nullable(),
+  }),
+  epochs: z.number(),
+  /** Under the newest shared population, of the entry that sees most. */
+  probability: z.number().nullable(),
+  undecided: z.number(),
+});
+export type StarView = z.infer<typeof starSchema>;
+
+export const starQuerySchema = z.strictObject({
+  limit: z.coerce.number().int().min(1).max(500).default(100),
+  offset: z.coerce.number().int().min(0).default(0),
+  q: z.string().trim().max(100).optional(),
+  survey: z.string().max(39).optional(),
+  only: z.enum(['shared', 'age-conflict', 'distance-conflict', 'adopted', 'undecided']).optional(),
+});
+export type StarQuery = z.infer<typeof starQuerySchema>;
+
+export const starListSchema = z.object({
+  stars: z.array(starSchema),
+  /** After the filters. */
+  total: z.number(),
+  /** Of the whole collaboration. */
+  counts: z.object({
+    stars: z.number(),
+    entries: z.number(),
+    shared: z.number(),
+    undecided: z.number(),
+    ageConflicts: z.number(),
+    distanceConflicts: z.number(),
+  }),
+});
+export type StarList = z.infer<typeof starListSchema>;
+
+const matchedStarSchema = z.object({
+  id: idSchema,
+  name: z.string(),
+  entries: z.array(
+    z.object({
+      targetId: idSchema,
+      name: z.string(),
+      survey: surveyRefSchema,
+      raDeg: z.number().nullable(),
+      decDeg: z.number().nullable(),
+      epochYr: z.number(),
+      pmRaMasYr: z.number().nullable(),
+      pmDecMasYr: z.number().nullable(),
+      distancePc: z.number().nullable(),
+      spectralType: z.string().nullable(),
+    }),
+  ),
+});
+
+export const starMatchSchema = z.object({
+  id: idSchema,
+  state: matchStateSchema,
+  evidence: matchEvidenceSchema,
+  /** 0: as good as sure, 1: at the edge of the rule. */
+  doubt: z.number(),
+  stars: z.tuple([matchedStarSchema, matchedStarSchema]),
+  decidedBy: z.string().nullable(),
+  decidedAt: moment.nullable(),
+  why: z.string().nullable(),
+});
+export type StarMatchView = z.infer<typeof starMatchSchema>;
+
+export const overlapsSchema = z.object({
+  open: z.array(starMatchSchema),
+  decided: z.array(starMatchSchema),
+  /** Joined when their tables were stored. */
+  automatic: z.object({ identifier: z.number(), name: z.number() }),
+  entries: z.number(),
+  stars: z.number(),
+  canDecide: z.boolean(),
+});
+export type Overlaps = z.infer<typeof overlapsSchema>;
+
+export const proposedSchema = z.object({ proposed: z.number() });
+export const decisionSchema = z.strictObject({ why: lineSchema(300) });
+export const splitSchema = z.strictObject({ targetId: idSchema, why: lineSchema(300) });
+
+export const adoptSchema = z.discriminatedUnion('quantity', [
+  z.strictObject({
+    quantity: z.literal('age'),
+    choice: z.union([
+      z.strictObject({ kind: z.literal('entry'), targetId: idSchema }),
+      z.strictObject({
+        kind: z.literal('value'),
+        value: ageValueSchema,
+        source: lineSchema(200),
+      }),
+      z.strictObject({ kind: z.literal('none') }),
+    ]),
+    why: lineSchema(300),
+  }),
+  z.strictObject({
+    quantity: z.literal('distance'),
+    choice: z.union([
+      z.strictObject({ kind: z.literal('entry'), targetId: idSchema }),
+      z.strictObject({
+        kind: z.literal('value'),
+        value: distanceValueSchema,
+        source: lineSchema(200),
+      }),
+      z.strictObject({ kind: z.literal('none') }),
+    ]),
+    why: lineSchema(300),
+  }),
+]);
+export type Adoption = z.infer<typeof adoptSchema>;
+
+export const valueTableSchema = z.object({
+  quantity: adoptedQuantitySchema,
+  number: z.number(),
+  why: z.string(),
+  createdBy: z.string().nullable(),
+  createdAt: moment,
+  /** Stars with an adopted value in this table. */
+  stars: z.number(),
+  changes: z.array(
+    z.object({
+      starId: idSchema,
+      star: z.string(),
+      value: z.union([ageValueSchema, distanceValueSchema]).nullable(),
+      source: z.string(),
+    }),
+  ),
+});
+export type ValueTableView = z.infer<typeof valueTableSchema>;
+export const valueTablesSchema = z.object({ tables: z.array(valueTableSchema) });
+
+/** One star with everything that hangs on it. */
+export const starPageSchema = starSchema.extend({
+  curves: z.array(curveSchema.extend({ targetId: idSchema, survey: z.string() })),
+  companions: z.array(companionSchema.extend({ survey: z.string() })),
+  analyses: z.array(
+    z.object({
+      key: z.string(),
+      name: z.string(),
+      run: z.number(),
+      probability: z.number(),
+      /** Of the sum of detection probabilities of that run. */
+      share: z.number(),
+    }),
+  ),
+  matches: z.array(starMatchSchema),
+  can: z.object({ combine: z.boolean(), adopt: z.boolean() }),
+});
+export type StarPage = z.infer<typeof starPageSchema>;
