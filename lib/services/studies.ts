@@ -20,7 +20,7 @@ const MOST_QUEUED = 20;
 const QUEUE_RETRY_S = 30;
 /** Hexadecimal digits of a seed. */
 const SEED_LENGTH = 16;
-/** Digits that only the view of one study needs stay in the database for lists. */
+/** Columns that only the view of one study needs are not read for lists. */
 const LISTED = { exclude: ['inputs', 'result'] };
 
 async function summarise(rows: StudyRow[]): Promise<StudySummary[]> {
