@@ -1,68 +1,94 @@
 'use client';
 
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { percentBelow } from '@/components/runs/level-table';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { SectionOpener } from '@/components/ui/section-opener';
+import { SelectField } from '@/components/ui/select-field';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import { formatRange } from '@/lib/quantities/display';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { BuilderSetting } from './builder-setting';
-import { quoteIndex } from './law-notation';
+import { type Population, summariseSystems } from '@/lib/population';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { Conventions, PreviewSetting } from './builder-setting';
 import { previewAnswer } from './preview-figures';
+import { useWholeDefinition } from './use-whole-definition';
+import { changesBetween } from './version-changes';
 
-interface Change {
-  name: string;
-  before: string;
-  now: string;
-  /** The version with this change alone. */
-  alone: PowerLawDefinition;
+interface AgainstVersionProps {
+  collaboration: string;
+  /** All versions, newest first. */
+  versions: ListedPopulation[];
+  /** The version on the screen, with which the comparison begins unless it is unchanged. */
+  shown: ListedPopulation;
+  isChanged: boolean;
+  /** What is compared with it: the controls as they stand. */
+  now: Population;
+  conventions: Conventions;
+  setting: PreviewSetting;
+  /** Undefined without maps: then the inputs alone are compared. */
+  sample?: LiveSample;
 }
 
 /** Each part that differs from a version, in input and in limit. */
-export function AgainstVersion({
-  version,
-  before,
-  usedBy,
-  setting,
-  sample,
-}: {
-  version: number;
-  /** The definition of that version. */
-  before: PowerLawDefinition;
-  /** Analyses that rest on it. */
-  usedBy: string[];
-  setting: BuilderSetting;
-  /** Undefined without maps: then the inputs alone are compared. */
-  sample?: LiveSample;
-}) {
-  const { definition, convention, prior, credibleLevel } = setting;
-  const changes = changesOf(before, definition, convention);
-  const alone = JSON.stringify(changes.map((change) => change.alone));
+export function AgainstVersion(props: AgainstVersionProps) {
+  const { collaboration, versions, shown, isChanged, now, conventions, setting, sample } = props;
+  const earlier = versions.find(({ version }) => version < shown.version);
+  const others = isChanged ? versions : versions.filter(({ id }) => id !== shown.id);
+  const [chosenId, setChosen] = useState<string>();
+  const base =
+    others.find(({ id }) => id === chosenId) ?? (isChanged ? shown : (earlier ?? others[0]));
+  const { definition: before } = useWholeDefinition(collaboration, base);
+  const { prior, credibleLevel } = setting;
+  const changes = useMemo(() => {
+    const listed = now.form === 'systems' ? summariseSystems(now) : now;
+    return base ? changesBetween(base.definition, listed, conventions) : [];
+  }, [base, now, conventions]);
   const limits = useMemo(() => {
-    if (!sample) return undefined;
-    const limit = (of: PowerLawDefinition) =>
-      previewAnswer(sample, { definition: of, prior, credibleLevel })?.withDetections?.limit ??
-      null;
+    if (!sample || !before || changes.length === 0) return undefined;
+    const limit = (definition: Population) =>
+      previewAnswer(sample, { definition, prior, credibleLevel })?.withDetections?.limit ?? null;
     return {
       before: limit(before),
-      now: limit(definition),
-      each: (JSON.parse(alone) as PowerLawDefinition[]).map(limit),
+      now: limit(now),
+      each: changes.map(({ alone }) => (alone === null ? null : limit(alone))),
     };
-  }, [sample, before, definition, prior, credibleLevel, alone]);
-
+  }, [sample, before, now, changes, prior, credibleLevel]);
+  if (!base) {
+    return (
+      <section className="min-w-0">
+        <SectionOpener title="Against a version" />
+        <p className="text-ink2 text-note">
+          Version {shown.version} is the only one and nothing is changed. {usedWords(shown)} Saving
+          makes a new version; nothing already run changes.
+        </p>
+      </section>
+    );
+  }
+  const nowWords = isChanged ? 'now' : `version ${shown.version}`;
   return (
     <section className="min-w-0">
-      <SectionOpener title={`Against version ${version}`} />
+      <SectionOpener title={`Against version ${base.version}`} />
+      {others.length > 1 && (
+        <div className="mb-3 max-w-60">
+          <SelectField
+            label="Compare with"
+            value={base.id}
+            onChange={(event) => setChosen(event.target.value)}
+            options={others.map(({ id, version, note }) => ({
+              value: id,
+              label: `version ${version}${note === '' ? '' : `: ${note.slice(0, 40)}`}`,
+            }))}
+          />
+        </div>
+      )}
       {changes.length === 0 ? (
-        <p className="text-ink2 text-note">Nothing differs from version {version}.</p>
+        <p className="text-ink2 text-note">Nothing differs from version {base.version}.</p>
       ) : (
-        <Table caption={`What differs from version ${version}`}>
+        <Table caption={`What differs from version ${base.version}`}>
           <TableHead>
             <tr>
               <HeadCell>part</HeadCell>
-              <HeadCell isNumeric>version {version}</HeadCell>
-              <HeadCell isNumeric>now</HeadCell>
+              <HeadCell isNumeric>version {base.version}</HeadCell>
+              <HeadCell isNumeric>{nowWords}</HeadCell>
               {limits && <HeadCell isNumeric>limit, %</HeadCell>}
             </tr>
           </TableHead>
@@ -76,18 +102,24 @@ export function AgainstVersion({
                 </Cell>
                 {limits && (
                   <Cell isNumeric>
-                    {percentBelow(limits.before)}{' '}
-                    <span className="limit">{percentBelow(limits.each[index])}</span>
+                    {change.alone !== null && (
+                      <span className="whitespace-nowrap">
+                        {percentBelow(limits.before)}{' '}
+                        <span className="limit">{percentBelow(limits.each[index])}</span>
+                      </span>
+                    )}
                   </Cell>
                 )}
               </Row>
             ))}
-            {limits && changes.length > 1 && (
+            {limits && (changes.length > 1 || changes[0].alone === null) && (
               <Row isTotal>
                 <Cell colSpan={3}>all together</Cell>
                 <Cell isNumeric>
-                  {percentBelow(limits.before)}{' '}
-                  <span className="limit">{percentBelow(limits.now)}</span>
+                  <span className="whitespace-nowrap">
+                    {percentBelow(limits.before)}{' '}
+                    <span className="limit">{percentBelow(limits.now)}</span>
+                  </span>
                 </Cell>
               </Row>
             )}
@@ -95,39 +127,15 @@ export function AgainstVersion({
         </Table>
       )}
       <p className="mt-3 text-ink2 text-note">
-        {usedBy.length === 0
-          ? `No analysis uses version ${version}.`
-          : `${usedBy.join(', ')} ${usedBy.length === 1 ? 'uses' : 'use'} version ${version} and keep${usedBy.length === 1 ? 's' : ''} it.`}{' '}
-        Saving makes a new version; nothing already run changes.
+        {usedWords(base)} Saving makes a new version; nothing already run changes.
       </p>
     </section>
   );
 }
 
-function changesOf(
-  before: PowerLawDefinition,
-  now: PowerLawDefinition,
-  convention: BuilderSetting['convention'],
-): Change[] {
-  const changes: Change[] = [];
-  const add = (
-    name: string,
-    show: (d: PowerLawDefinition) => string,
-    part: (keyof PowerLawDefinition)[],
-  ) => {
-    if (part.every((field) => before[field] === now[field])) return;
-    const alone = { ...before, ...Object.fromEntries(part.map((field) => [field, now[field]])) };
-    changes.push({ name, before: show(before), now: show(now), alone });
-  };
-  add('mass range', (d) => formatRange(d.massMinMjup, d.massMaxMjup, 'MJ'), [
-    'massMinMjup',
-    'massMaxMjup',
-  ]);
-  add('index α', (d) => quoteIndex(d.massIndex, convention), ['massIndex']);
-  add('axis range', (d) => formatRange(d.semiMajorAxisMinAu, d.semiMajorAxisMaxAu, 'AU'), [
-    'semiMajorAxisMinAu',
-    'semiMajorAxisMaxAu',
-  ]);
-  add('index β', (d) => quoteIndex(d.semiMajorAxisIndex, convention), ['semiMajorAxisIndex']);
-  return changes;
+function usedWords({ usedBy, version }: ListedPopulation): string {
+  if (usedBy.length === 0) return `No analysis uses version ${version}.`;
+  return usedBy.length === 1
+    ? `${usedBy[0]} uses version ${version} and keeps it.`
+    : `${usedBy.join(', ')} use version ${version} and keep it.`;
 }

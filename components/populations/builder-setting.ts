@@ -1,20 +1,18 @@
-import {
-  definitionFromQuery,
-  definitionToQuery,
-  isSameDefinition,
-  priorFromText,
-  priorToText,
-  type Query,
-} from '@/components/runs/live-setting';
+import { priorFromText, priorToText, type Query } from '@/components/runs/live-setting';
 import type { RatePrior } from '@/lib/inference';
-import type { IndexConvention } from '@/lib/population';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
+import type { AxisConvention, MassConvention } from '@/lib/population';
+import { axisConventionSchema, indexConventionSchema } from '@/lib/schemas/populations';
+import { lawFromQuery, lawToQuery } from './law-address';
+import type { LawDefinition } from './law-parts';
 
-/** The population itself, and what the preview asks of it. */
-export interface BuilderSetting {
-  definition: PowerLawDefinition;
-  /** How the indices are quoted on the screen; stored they are per natural logarithm. */
-  convention: IndexConvention;
+/** What indices are stated per on the screen; stored they are per natural logarithm. */
+export interface Conventions {
+  mass: MassConvention;
+  semiMajorAxis: AxisConvention;
+}
+
+/** What the preview asks of a population, whatever its form. */
+export interface PreviewSetting {
   /** Prior of the host fraction for the preview; an analysis chooses its own. */
   prior: RatePrior;
   credibleLevel: number;
@@ -22,8 +20,14 @@ export interface BuilderSetting {
   statedFraction: number;
 }
 
+/** The population itself, and what the preview asks of it. */
+export interface BuilderSetting extends PreviewSetting {
+  definition: LawDefinition;
+  conventions: Conventions;
+}
+
 /** dN/dM ∝ M^−1.3 and dN/da ∝ a^−0.6, stored per logarithm. */
-export const FIRST_DEFINITION: PowerLawDefinition = {
+export const FIRST_DEFINITION: LawDefinition = {
   form: 'power-law',
   massMinMjup: 2,
   massMaxMjup: 30,
@@ -33,33 +37,34 @@ export const FIRST_DEFINITION: PowerLawDefinition = {
   semiMajorAxisIndex: 0.4,
 };
 
-export function defaultSetting(definition: PowerLawDefinition): BuilderSetting {
+export const FIRST_PREVIEW: PreviewSetting = {
+  prior: { law: 'uniform', max: 1 },
+  credibleLevel: 0.95,
+  statedFraction: 0.05,
+};
+
+export function defaultSetting(definition: LawDefinition): BuilderSetting {
   return {
     definition,
-    convention: 'linear',
-    prior: { law: 'uniform', max: 1 },
-    credibleLevel: 0.95,
-    statedFraction: 0.05,
+    conventions: { mass: 'linear', semiMajorAxis: 'linear' },
+    ...FIRST_PREVIEW,
   };
 }
 
-export function builderFromQuery(query: Query, saved: BuilderSetting): BuilderSetting {
+export function previewFromQuery<S extends PreviewSetting>(query: Query, saved: S): S {
   const stated = Number(query.f);
   return {
     ...saved,
-    definition: definitionFromQuery(query, saved.definition),
-    convention: query.convention === 'log' ? 'log' : 'linear',
     prior: priorFromText(query.prior) ?? saved.prior,
     statedFraction: stated > 0 && stated <= 1 ? stated : saved.statedFraction,
   };
 }
 
-export function builderToQuery(
-  setting: BuilderSetting,
-  saved: BuilderSetting,
+export function previewToQuery(
+  setting: PreviewSetting,
+  saved: PreviewSetting,
 ): Record<string, string> {
-  const query = definitionToQuery(setting.definition, saved.definition);
-  if (setting.convention !== saved.convention) query.convention = setting.convention;
+  const query: Record<string, string> = {};
   if (priorToText(setting.prior) !== priorToText(saved.prior)) {
     query.prior = priorToText(setting.prior);
   }
@@ -67,4 +72,28 @@ export function builderToQuery(
   return query;
 }
 
-export { isSameDefinition };
+export function builderFromQuery(query: Query, saved: BuilderSetting): BuilderSetting {
+  const mass = indexConventionSchema.safeParse(query.convention);
+  const axis = axisConventionSchema.safeParse(query.axisConvention ?? query.convention);
+  return {
+    ...previewFromQuery(query, saved),
+    definition: lawFromQuery(query, saved.definition),
+    conventions: {
+      mass: mass.success ? mass.data : saved.conventions.mass,
+      semiMajorAxis: axis.success ? axis.data : saved.conventions.semiMajorAxis,
+    },
+  };
+}
+
+export function builderToQuery(
+  setting: BuilderSetting,
+  saved: BuilderSetting,
+): Record<string, string> {
+  const { mass, semiMajorAxis } = setting.conventions;
+  return {
+    ...lawToQuery(setting.definition, saved.definition),
+    ...(mass !== saved.conventions.mass && { convention: mass }),
+    ...(semiMajorAxis !== mass && { axisConvention: semiMajorAxis }),
+    ...previewToQuery(setting, saved),
+  };
+}

@@ -1,4 +1,9 @@
-import type { MapData } from '@/components/charts/map-contours';
+import type { MapGrid } from '@/lib/sensitivity';
+
+/** A map, in whatever unit its values are. */
+interface AnyMap extends MapGrid {
+  completeness: ArrayLike<number>;
+}
 
 /** Position of x between nodes, linear in ln x; undefined outside. */
 function place(nodes: Float64Array, x: number): { below: number; share: number } | undefined {
@@ -12,9 +17,9 @@ function place(nodes: Float64Array, x: number): { below: number; share: number }
 /**
  * Completeness between the nodes of a map, bilinear in (ln m, ln a), as weights integrate it.
  *
- * @returns [fraction]; 0 outside the map
+ * @returns in the unit of the map; 0 outside it
  */
-export function interpolateMap(map: MapData, massMjup: number, semiMajorAxisAu: number): number {
+export function interpolateMap(map: AnyMap, massMjup: number, semiMajorAxisAu: number): number {
   const row = place(map.massMjup, massMjup);
   const column = place(map.semiMajorAxisAu, semiMajorAxisAu);
   if (!row || !column) return 0;

@@ -1,12 +1,9 @@
+import { FormulaWords } from '@/components/studies/formula-words';
 import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { describePopulation } from '@/lib/inference';
-import { fromLogIndex, type IndexConvention } from '@/lib/population';
+import { type AxisConvention, fromLogIndex } from '@/lib/population';
 import { formatPlain, formatRange, THIN_SPACE } from '@/lib/quantities/display';
-import {
-  isPlainPowerLaw,
-  type ListedDefinition,
-  type PowerLawDefinition,
-} from '@/lib/schemas/populations';
+import { isPlainPowerLaw, type ListedDefinition } from '@/lib/schemas/populations';
 
 /** An index with at most three decimals and a true minus sign. */
 export function formatIndex(value: number): string {
@@ -15,7 +12,7 @@ export function formatIndex(value: number): string {
 }
 
 /** The stored index as the chosen convention quotes it. */
-export function quoteIndex(logIndex: number, convention: IndexConvention): string {
+export function quoteIndex(logIndex: number, convention: AxisConvention): string {
   return formatIndex(fromLogIndex(logIndex, convention));
 }
 
@@ -46,42 +43,60 @@ const variables = {
   'semi-major axis': { symbol: 'a', field: 'semiMajorAxisIndex' },
 } as const;
 
+/** "dN/d ln M" and the variable that it follows, in a convention. */
+export function Density({ symbol, convention }: { symbol: string; convention: AxisConvention }) {
+  const isPeriod = convention === 'period' || convention === 'linear-period';
+  const isLog = convention === 'log' || convention === 'period';
+  return (
+    <>
+      d<i>N</i>/d{isLog && ' ln '}
+      {convention === 'log10' && (
+        <>
+          {' '}
+          log<sub>10</sub>{' '}
+        </>
+      )}
+      <i>{isPeriod ? 'P' : symbol}</i>
+    </>
+  );
+}
+
 /** dN/dM ∝ M^−1.3, in the convention that its left side names. */
-export function PowerLaw({
-  variable,
-  definition,
+export function PowerOf({
+  symbol,
+  index,
   convention = 'linear',
 }: {
-  variable: keyof typeof variables;
-  definition: PowerLawDefinition;
-  convention?: IndexConvention;
+  symbol: string;
+  /** As stored, per natural logarithm. */
+  index: number;
+  convention?: AxisConvention;
 }) {
-  const { symbol, field } = variables[variable];
+  const isPeriod = convention === 'period' || convention === 'linear-period';
   return (
     <span className="whitespace-nowrap">
-      d<i>N</i>/d{convention === 'log' && ' ln '}
-      <i>{symbol}</i>
+      <Density symbol={symbol} convention={convention} />
       <ProportionalTo />
-      <i>{symbol}</i>
-      <sup>{quoteIndex(definition[field], convention)}</sup>
+      <i>{isPeriod ? 'P' : symbol}</i>
+      <sup>{quoteIndex(index, convention)}</sup>
     </span>
   );
 }
 
 /** Both laws, separated by a comma; what is not a plain power law in words. */
-export function PowerLaws({
-  definition,
-  convention = 'linear',
-}: {
-  definition: ListedDefinition;
-  convention?: IndexConvention;
-}) {
-  if (!isPlainPowerLaw(definition)) return <>{describePopulation(definition)}</>;
+export function PowerLaws({ definition }: { definition: ListedDefinition }) {
+  if (!isPlainPowerLaw(definition)) return <FormulaWords text={describePopulation(definition)} />;
   return (
     <>
-      <PowerLaw variable="mass" definition={definition} convention={convention} />
-      {', '}
-      <PowerLaw variable="semi-major axis" definition={definition} convention={convention} />
+      {(['mass', 'semi-major axis'] as const).map((variable) => (
+        <span key={variable}>
+          {variable === 'semi-major axis' && ', '}
+          <PowerOf
+            symbol={variables[variable].symbol}
+            index={definition[variables[variable].field]}
+          />
+        </span>
+      ))}
     </>
   );
 }

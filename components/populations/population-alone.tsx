@@ -4,15 +4,18 @@ import { useMemo } from 'react';
 import { ChartFigure } from '@/components/charts/chart-figure';
 import { MapAxes, mapFrame } from '@/components/charts/map-layers';
 import { useWidth } from '@/components/charts/use-width';
+import { orNull } from '@/components/runs/live-answer';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
+import { type Population, populationBox } from '@/lib/population';
 import { formatRange } from '@/lib/quantities/display';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
-import { drawSeen, PLANETS } from './preview-figures';
+import { drawSeen } from './preview-figures';
 
 const margin = { left: 46, right: 16, top: 8, bottom: 46 };
 const height = 420;
+/** Planets of a mass ratio are drawn around one such star. */
+const SUN_MSUN = 1;
 
 /** Server and browser differ in the last bit of a logarithm: what both write must not show it. */
 function toHundredth(px: number): number {
@@ -25,13 +28,15 @@ export function PopulationAlone({
   grid,
   reason,
 }: {
-  definition: PowerLawDefinition;
+  definition: Population;
   grid: MapGrid;
   /** Why there are no maps. */
   reason: string;
 }) {
   const [measure, width] = useWidth<HTMLDivElement>(760);
-  const planets = useMemo(() => drawSeen(definition, undefined), [definition]);
+  const planets = useMemo(() => orNull(() => drawSeen(definition, undefined)), [definition]);
+  const range = populationBox(definition, SUN_MSUN);
+  const shown = planets?.massMjup.length ?? 0;
   const empty = useMemo(
     () => ({
       ...grid,
@@ -41,21 +46,28 @@ export function PopulationAlone({
   );
   const frame = mapFrame(empty, width, height, margin);
   const box = {
-    left: toHundredth(frame.x(definition.semiMajorAxisMinAu)),
-    right: toHundredth(frame.x(definition.semiMajorAxisMaxAu)),
-    top: toHundredth(frame.y(definition.massMaxMjup)),
-    bottom: toHundredth(frame.y(definition.massMinMjup)),
+    left: toHundredth(frame.x(range.semiMajorAxisMinAu)),
+    right: toHundredth(frame.x(range.semiMajorAxisMaxAu)),
+    top: toHundredth(frame.y(range.massMaxMjup)),
+    bottom: toHundredth(frame.y(range.massMinMjup)),
   };
   return (
     <section className="min-w-0">
-      <SectionOpener title={`${PLANETS} planets drawn from it`} context="without any survey" />
+      <SectionOpener
+        title={`${shown} ${definition.form === 'systems' ? 'companions' : 'planets'} of it`}
+        context={
+          definition.form === 'mass-ratio'
+            ? 'around a star of one solar mass, without any survey'
+            : 'without any survey'
+        }
+      />
       <div className="mb-4">
         <Notice tone="neutral" title="No maps yet.">
           {reason}
         </Notice>
       </div>
       <ChartFigure
-        label={`${PLANETS} planets drawn from the population: ${formatRange(definition.massMinMjup, definition.massMaxMjup, 'Jupiter masses')} at ${formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU')}`}
+        label={`${shown} planets of the population: ${formatRange(range.massMinMjup, range.massMaxMjup, 'Jupiter masses')} at ${formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}`}
         width={width}
         height={height}
         measure={measure}
@@ -63,20 +75,20 @@ export function PopulationAlone({
           {
             caption: 'Drawn planets',
             columns: ['planet', 'mass, Jupiter masses', 'semi-major axis, AU'],
-            rows: Array.from(planets.massMjup, (mass, i) => [
+            rows: Array.from(planets?.massMjup ?? [], (mass, i) => [
               String(i + 1),
               mass.toPrecision(3),
-              planets.semiMajorAxisAu[i].toPrecision(3),
+              (planets?.semiMajorAxisAu[i] ?? 0).toPrecision(3),
             ]),
           },
         ]}
       >
-        {Array.from(planets.massMjup, (mass, i) => (
+        {Array.from(planets?.massMjup ?? [], (mass, i) => (
           <circle
             // biome-ignore lint/suspicious/noArrayIndexKey: planet i is always the i-th draw
             key={i}
             className="planet-missed"
-            cx={toHundredth(frame.x(planets.semiMajorAxisAu[i]))}
+            cx={toHundredth(frame.x(planets?.semiMajorAxisAu[i] ?? 0))}
             cy={toHundredth(frame.y(mass))}
             r="4"
           />

@@ -9,7 +9,9 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import { AxisRange, MassRange, PowerLaws } from './law-notation';
+import { AxisRange, MassRange } from './law-notation';
+import { newestOfEach } from './newest-versions';
+import { LawsAlone } from './shape-words';
 
 interface PopulationListProps {
   collaboration: string;
@@ -35,8 +37,8 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
       />
       {populations.length === 0 ? (
         <EmptyState title="No population yet" actions={newButton}>
-          Describe a power law in planet mass and semi-major axis with its ranges; while you move
-          them, you see which of its planets the surveys would find.
+          Describe laws of planet mass and semi-major axis with their ranges, or bring a table of
+          whole systems; while you move them, you see which of the planets the surveys would find.
         </EmptyState>
       ) : (
         <section className="pb-10">
@@ -72,7 +74,7 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
                     </span>
                   </Cell>
                   <Cell className="max-lg:hidden">
-                    <PowerLaws definition={population.definition} />
+                    <LawsAlone definition={population.definition} />
                   </Cell>
                   <Cell className="max-md:hidden">
                     <MassRange definition={population.definition} />
@@ -94,14 +96,4 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
       )}
     </>
   );
-}
-
-/** The list comes newest version first: the first of each number is the newest. */
-export function newestOfEach(versions: ListedPopulation[]): ListedPopulation[] {
-  const seen = new Set<number>();
-  return versions.filter((version) => {
-    if (seen.has(version.number)) return false;
-    seen.add(version.number);
-    return true;
-  });
 }

@@ -1,87 +1,113 @@
-import type { DrawnCompanions, MarginCurve } from '@/components/charts/companion-scatter';
+import type { DrawnCompanions } from '@/components/charts/companion-scatter';
 import type { MapData } from '@/components/charts/map-contours';
-import { contract, weighContracted } from '@/components/runs/contracted';
 import { orNull } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { type Answer, answerFromView, type PopulationView, viewPopulation } from '@/lib/inference';
 import {
   drawCompanions,
+  type Population,
   type PopulationWeights,
-  populationLaws,
-  populationWeights,
-  toLogIndex,
+  requireHostMasses,
 } from '@/lib/population';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { BuilderSetting } from './builder-setting';
+import type { PreviewSetting } from './builder-setting';
 import { interpolateMap } from './interpolate-map';
+import {
+  definitionOf,
+  type LawDefinition,
+  type LawParameter,
+  partsOf,
+  withParameter,
+} from './law-parts';
+import { hostMassesOf, type Spread, spreadOf } from './spread';
 
 export const PLANETS = 240;
-/** Below this mean detection probability a limit rests on the indices and not on data. */
+/** Below this mean detection probability a limit rests on the population and not on data. */
 export const HARDLY_SEEN = 0.05;
+/** So many companions of a table are shown one by one; of a longer one, drawn ones. */
+export const MOST_SHOWN = 480;
 
 /** One number between 0 and 1 a planet, always the same: a dragged range must not flicker. */
 const chances = Float64Array.from(
-  { length: PLANETS },
+  { length: MOST_SHOWN },
   (_, i) => ((i + 1) * 0.6180339887498949) % 1,
 );
 
-/** Planets drawn from the population; each is seen with the mean completeness at its place. */
+/**
+ * Planets of the population; each is seen with the mean completeness at its place, or, where the
+ * masses are those of the star, with that of a star's own map.
+ *
+ * @param hosts stars on which planets of a mass ratio are placed; one of 1 solar mass without it
+ */
 export function drawSeen(
-  definition: PowerLawDefinition,
+  population: Population,
   map: MapData | undefined,
+  hosts?: { sample: LiveSample; spread: Spread },
 ): DrawnCompanions {
-  const drawn = drawCompanions(definition, PLANETS, 'preview');
-  const isSeen = new Uint8Array(PLANETS);
-  if (map) {
-    for (let i = 0; i < PLANETS; i++) {
-      const seen = interpolateMap(map, drawn.massMjup[i], drawn.semiMajorAxisAu[i]);
-      isSeen[i] = chances[i] < seen ? 1 : 0;
-    }
+  if (population.form === 'systems' && population.massMjup.length <= MOST_SHOWN) {
+    const { massMjup, semiMajorAxisAu } = population;
+    return seeOn(map, {
+      massMjup: Float64Array.from(massMjup),
+      semiMajorAxisAu: Float64Array.from(semiMajorAxisAu),
+    });
   }
+  if (population.form !== 'mass-ratio') {
+    return seeOn(map, drawCompanions(population, PLANETS, 'preview'));
+  }
+  if (!hosts) {
+    const suns = new Float64Array(PLANETS).fill(1);
+    return seeOn(map, drawCompanions(population, PLANETS, 'preview', suns));
+  }
+  const { sample, spread } = hosts;
+  const star = starOfEach(spread);
+  const masses = hostMassesOf(sample);
+  const drawn = drawCompanions(
+    population,
+    PLANETS,
+    'preview',
+    Float64Array.from(star, (j) => masses[j]),
+  );
+  const size = sample.grid.massMjup.length * sample.grid.semiMajorAxisAu.length;
+  const isSeen = Uint8Array.from(star, (j, i) => {
+    const own = { ...sample.grid, completeness: sample.maps.subarray(j * size, (j + 1) * size) };
+    const seen = interpolateMap(own, drawn.massMjup[i], drawn.semiMajorAxisAu[i]) / 65_535;
+    return chances[i] < seen ? 1 : 0;
+  });
   return { ...drawn, isSeen };
 }
 
-const MARGIN_POINTS = 60;
-
-/** Density per logarithm along one axis: all planets, and those that would be seen. */
-export function marginOf(
-  definition: PowerLawDefinition,
-  map: MapData,
-  weights: PopulationWeights,
-  axis: 'mass' | 'semiMajorAxis',
-): MarginCurve {
-  const { law, min, max } = populationLaws(definition)[axis];
-  const nodes = axis === 'mass' ? map.massMjup : map.semiMajorAxisAu;
-  const columns = map.semiMajorAxisAu.length;
-  const seenAt = Float64Array.from(nodes, (_, node) => {
-    let sum = 0;
-    const other = axis === 'mass' ? weights.semiMajorAxis : weights.mass;
-    for (let j = 0; j < other.length; j++) {
-      const index = axis === 'mass' ? node * columns + j : j * columns + node;
-      sum += other[j] * map.completeness[index];
-    }
-    return sum;
+/** The star of each planet: in order, each with its share of them. */
+function starOfEach({ star, share }: Spread): number[] {
+  let at = 0;
+  let upTo = share[0];
+  return Array.from({ length: PLANETS }, (_, i) => {
+    while (at < star.length - 1 && (i + 0.5) / PLANETS > upTo) upTo += share[++at];
+    return star[at];
   });
-  const at = Float64Array.from(
-    { length: MARGIN_POINTS },
-    (_, i) => min * (max / min) ** (i / (MARGIN_POINTS - 1)),
-  );
-  const all = at.map((x) => law.shape(x));
-  const seen = all.map((density, i) => density * valueOn(nodes, seenAt, at[i]));
-  return { at, all, seen };
 }
 
-function valueOn(nodes: Float64Array, values: Float64Array, x: number): number {
-  if (x < nodes[0] || x > nodes[nodes.length - 1]) return 0;
-  let above = 1;
-  while (above < nodes.length - 1 && nodes[above] < x) above++;
-  const step = Math.log(nodes[above] / nodes[above - 1]);
-  const share = Math.log(x / nodes[above - 1]) / step;
-  return values[above - 1] + share * (values[above] - values[above - 1]);
+function seeOn(map: MapData | undefined, drawn: Omit<DrawnCompanions, 'isSeen'>): DrawnCompanions {
+  const isSeen = Uint8Array.from(drawn.massMjup, (mass, i) =>
+    map && chances[i] < interpolateMap(map, mass, drawn.semiMajorAxisAu[i]) ? 1 : 0,
+  );
+  return { ...drawn, isSeen };
 }
 
 /** Share of the population where the mean detection probability is under 5 %, outside included. */
-export function shareHardlySeen(map: MapData, weights: PopulationWeights): number {
+export function shareHardlySeen(
+  map: MapData,
+  population: Population,
+  weights: PopulationWeights,
+): number {
+  if (population.form === 'systems') {
+    let [hardly, whole] = [0, 0];
+    population.companionSystem.forEach((system, k) => {
+      const own = population.weight[system];
+      whole += own;
+      const seen = interpolateMap(map, population.massMjup[k], population.semiMajorAxisAu[k]);
+      if (seen < HARDLY_SEEN) hardly += own;
+    });
+    return hardly / whole;
+  }
   const columns = map.semiMajorAxisAu.length;
   let share = weights.shareOutsideMap;
   weights.mass.forEach((mass, row) => {
@@ -100,96 +126,85 @@ export interface PreviewAnswer {
   zero: Answer | null;
 }
 
-export function previewAnswer(
-  sample: LiveSample,
-  setting: Omit<BuilderSetting, 'convention' | 'statedFraction'>,
-): PreviewAnswer | null {
+/** What is asked of a population. */
+export interface Asked extends Pick<PreviewSetting, 'prior' | 'credibleLevel'> {
+  definition: Population;
+}
+
+function askedOf({ prior, credibleLevel }: Asked) {
+  return { likelihood: 'host-fraction' as const, prior, level: credibleLevel };
+}
+
+export function previewAnswer(sample: LiveSample, asked: Asked): PreviewAnswer | null {
   return orNull(() => {
-    const view = viewPopulation(sample.maps, sample.grid, setting.definition);
-    const asked = {
-      likelihood: 'host-fraction' as const,
-      prior: setting.prior,
-      level: setting.credibleLevel,
-    };
-    return {
-      view,
-      withDetections: orNull(() =>
-        answerFromView(view, { ...asked, detections: sample.companions }),
-      ),
-      zero: orNull(() => answerFromView(view, { ...asked, detections: [] })),
-    };
+    const view = viewPopulation(sample.maps, sample.grid, asked.definition, hostMassesOf(sample));
+    const answer = (detections: LiveSample['companions']) =>
+      orNull(() => answerFromView(view, { ...askedOf(asked), detections }));
+    return { view, withDetections: answer(sample.companions), zero: answer([]) };
   });
 }
 
-const firstMasses = [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10, 12, 15, 20, 25, 30, 40];
+/** Why a population has no answer on a sample. */
+export function faultOnSample(sample: LiveSample, population: Population): string | null {
+  try {
+    const masses = hostMassesOf(sample);
+    const names = sample.stars.map(({ name }) => name);
+    requireHostMasses(population, masses, names.length, names);
+    viewPopulation(sample.maps, sample.grid, population, masses);
+    return null;
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    return error.message;
+  }
+}
 
-/** The smallest round mass from which on hardly anything is out of sight. */
+/** The limit against one number of a law, all others standing still; NaN where there is none. */
+export function parameterTrace(
+  sample: LiveSample,
+  asked: Asked & { definition: LawDefinition },
+  parameter: LawParameter,
+  values: number[],
+): { values: number[]; limits: number[] } {
+  const parts = partsOf(asked.definition);
+  const masses = hostMassesOf(sample);
+  const limits = values.map((value) => {
+    const limit = orNull(() => {
+      const definition = definitionOf(withParameter(parts, parameter, value));
+      const view = viewPopulation(sample.maps, sample.grid, definition, masses);
+      return answerFromView(view, { ...askedOf(asked), detections: sample.companions }).limit;
+    });
+    return limit ?? Number.NaN;
+  });
+  return { values, limits };
+}
+
+const roundStarts = {
+  mass: [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10, 12, 15, 20, 25, 30, 40],
+  ratio: [0.0005, 0.001, 0.0015, 0.002, 0.003, 0.004, 0.005, 0.007, 0.01, 0.015, 0.02, 0.03, 0.05],
+};
+
+export interface BetterStart {
+  start: number;
+  isRatio: boolean;
+  definition: LawDefinition;
+  share: number;
+}
+
+/** The smallest round mass, or mass ratio, from which on hardly anything is out of sight. */
 export function betterStart(
-  map: MapData,
-  definition: PowerLawDefinition,
-): { massMinMjup: number; share: number } | null {
-  for (const massMinMjup of firstMasses) {
-    if (massMinMjup <= definition.massMinMjup || massMinMjup >= definition.massMaxMjup) continue;
-    const weights = orNull(() => populationWeights(map, { ...definition, massMinMjup }));
-    if (weights === null) continue;
-    const share = shareHardlySeen(map, weights);
-    if (share < 0.01) return { massMinMjup, share };
+  sample: LiveSample,
+  meanMap: MapData,
+  definition: LawDefinition,
+): BetterStart | null {
+  const parts = partsOf(definition);
+  const [min, max] = parts.mass.range;
+  for (const start of roundStarts[parts.isRatio ? 'ratio' : 'mass']) {
+    if (start <= min || start >= max) continue;
+    const moved = definitionOf({ ...parts, mass: { ...parts.mass, range: [start, max] } });
+    const spread = orNull(() => spreadOf(sample, meanMap, moved));
+    if (spread === null) continue;
+    const share = shareHardlySeen(spread.map, moved, spread.weights);
+    if (share < 0.01) return { start, isRatio: parts.isRatio, definition: moved, share };
   }
   return null;
-}
-
-export interface PlaneOfLimits {
-  massIndex: Float64Array;
-  semiMajorAxisIndex: Float64Array;
-  limit: Float64Array;
-}
-
-const ROWS = 10;
-const COLUMNS = 10;
-
-/** The limit over both linear indices, around the present ones. */
-export function limitPlane(
-  sample: LiveSample,
-  setting: Omit<BuilderSetting, 'convention' | 'statedFraction'>,
-  ends: { massIndex: [number, number]; semiMajorAxisIndex: [number, number] },
-): PlaneOfLimits | null {
-  const axis = ([from, to]: [number, number], n: number) =>
-    Float64Array.from({ length: n }, (_, i) => from + (i * (to - from)) / (n - 1));
-  const massIndex = axis(ends.massIndex, ROWS);
-  const semiMajorAxisIndex = axis(ends.semiMajorAxisIndex, COLUMNS);
-  const asked = {
-    likelihood: 'host-fraction' as const,
-    prior: setting.prior,
-    level: setting.credibleLevel,
-    detections: sample.companions,
-  };
-  return orNull(() => {
-    const limit = new Float64Array(ROWS * COLUMNS);
-    const populations = Array.from(semiMajorAxisIndex, (beta) => {
-      const population = {
-        ...setting.definition,
-        semiMajorAxisIndex: toLogIndex(beta, 'linear'),
-      };
-      return { population, weights: populationWeights(sample.grid, population) };
-    });
-    massIndex.forEach((alpha, row) => {
-      const law = { ...setting.definition, massIndex: toLogIndex(alpha, 'linear') };
-      const contracted = contract(sample, populationWeights(sample.grid, law), 'semiMajorAxis');
-      populations.forEach(({ population, weights }, column) => {
-        const completenessPerStar = weighContracted(contracted, weights.semiMajorAxis);
-        const view = {
-          population,
-          completenessPerStar,
-          numberSeenPerStar: null,
-          rateScale: null,
-          hostMassMsun: null,
-          exposure: completenessPerStar.reduce((sum, c) => sum + c, 0),
-          stars: sample.stars.length,
-          shareOutsideMap: weights.shareOutsideMap,
-        };
-        limit[row * COLUMNS + column] = answerFromView(view, asked).limit;
-      });
-    });
-    return { massIndex, semiMajorAxisIndex, limit };
-  });
 }

@@ -10,11 +10,14 @@ import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { LawDefinition } from './law-parts';
 
 interface SavePopulationProps {
   collaboration: string;
-  definition: PowerLawDefinition;
+  definition: LawDefinition;
+  /** Why the population cannot be saved, or null. */
+  fault: string | null;
   /** The version that it goes out from. */
   version?: ListedPopulation;
   isChanged: boolean;
@@ -23,7 +26,7 @@ interface SavePopulationProps {
 
 /** Saving asks for a name or a note, and says in a sentence why it was refused. */
 export function SavePopulation(props: SavePopulationProps) {
-  const { collaboration, definition, version, isChanged, canShare } = props;
+  const { collaboration, definition, fault, version, isChanged, canShare } = props;
   const router = useRouter();
   const addsVersion = version?.can.saveVersion === true;
   const [isOpen, setOpen] = useState(false);
@@ -68,7 +71,11 @@ export function SavePopulation(props: SavePopulationProps) {
         variant="primary"
         onClick={() => setOpen(true)}
         disabledReason={
-          version && !isChanged ? `Nothing differs from version ${version.version}.` : undefined
+          fault !== null
+            ? `It cannot be used: ${fault}.`
+            : version && !isChanged
+              ? `Nothing differs from version ${version.version}.`
+              : undefined
         }
       >
         {words}

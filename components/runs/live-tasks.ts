@@ -1,4 +1,5 @@
-import { limitPlane } from '@/components/populations/preview-figures';
+import { limitPlane } from '@/components/populations/limit-plane';
+import { parameterTrace } from '@/components/populations/preview-figures';
 import { consequencesOf, linearTrace } from './consequences';
 import type { LiveSample } from './live-sample';
 
@@ -7,6 +8,7 @@ export const liveTasks = {
   consequences: consequencesOf,
   linearTrace,
   limitPlane,
+  parameterTrace,
 };
 
 export type LiveTasks = typeof liveTasks;

@@ -1,0 +1,184 @@
+'use client';
+
+import { type ReactNode, useDeferredValue, useMemo, useState } from 'react';
+import { useAddressQuery } from '@/components/hooks/use-address-query';
+import { orNull } from '@/components/runs/live-answer';
+import { profileAlong } from '@/components/runs/survey-sums';
+import { Button } from '@/components/ui/button';
+import { LinkButton } from '@/components/ui/link-button';
+import { PageTitle } from '@/components/ui/page-title';
+import { StateMark } from '@/components/ui/state-mark';
+import { needsHostMass } from '@/lib/population';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import { DEFAULT_GRID } from '@/lib/sensitivity';
+import { AgainstVersion } from './against-version';
+import { BuilderControls } from './builder-controls';
+import {
+  type BuilderSetting,
+  builderFromQuery,
+  builderToQuery,
+  defaultSetting,
+} from './builder-setting';
+import { InWords } from './in-words';
+import { faultOf, isSameLaw, type LawDefinition } from './law-parts';
+import { hasIndexPlane } from './limit-plane';
+import { orbitWords } from './orbit-words';
+import { PlaneSection } from './plane-section';
+import { PopulationAlone } from './population-alone';
+import type { PopulationBuilderProps } from './population-builder';
+import { PopulationPreview } from './population-preview';
+import { SavePopulation } from './save-population';
+import { spreadOf } from './spread';
+import { type Preview, usePreview } from './use-preview';
+import { VersionList } from './version-list';
+
+interface LawBuilderProps extends PopulationBuilderProps {
+  start: LawDefinition;
+  /** Above the controls of a new population. */
+  choice?: ReactNode;
+}
+
+const noGrid = DEFAULT_GRID();
+
+/** Laws under their controls, and at once what the surveys would see of them. */
+export function LawBuilder(props: LawBuilderProps) {
+  const { collaboration, versions, version, previewRun, canShare, query, start, choice } = props;
+  const saved = useMemo(() => defaultSetting(start), [start]);
+  const [setting, setSetting] = useState(() => builderFromQuery(query, saved));
+  const [settled, setSettled] = useState(setting);
+  const change = (next: BuilderSetting, isSettled: boolean) => {
+    setSetting(next);
+    if (isSettled) setSettled(next);
+  };
+  const { definition } = setting;
+  const isChanged = !isSameLaw(definition, saved.definition);
+  const fault = useMemo(() => faultOf(definition), [definition]);
+  useAddressQuery({
+    ...(query.version === undefined ? {} : { version: query.version }),
+    ...builderToQuery(setting, saved),
+  });
+  const { preview, reason, isFetchingMasses } = usePreview(
+    collaboration,
+    previewRun,
+    needsHostMass(definition),
+  );
+  const grid = preview?.sample.grid ?? noGrid;
+  const profiles = useProfiles(preview, definition);
+  // Controls follow a finger at once; what costs more than a frame may come one frame later.
+  const shown = useDeferredValue(setting);
+
+  return (
+    <>
+      <PageTitle
+        title={version?.name ?? 'New population'}
+        crumbs={[
+          { href: `/${collaboration}/populations`, label: 'Populations' },
+          { label: version ? `${version.key}, version ${version.version}` : 'New' },
+        ]}
+        state={<BuilderState version={version} isChanged={isChanged} />}
+        actions={
+          <>
+            {isChanged && (
+              <Button variant="quiet" onClick={() => change(saved, true)}>
+                Discard
+              </Button>
+            )}
+            {version && (
+              <LinkButton
+                href={`/${collaboration}/analyses/new?population=${version.id}`}
+                icon="forward"
+              >
+                Use {isChanged ? `version ${version.version} ` : ''}in an analysis
+              </LinkButton>
+            )}
+            <SavePopulation
+              collaboration={collaboration}
+              definition={definition}
+              fault={fault}
+              version={version}
+              isChanged={isChanged}
+              canShare={canShare}
+            />
+          </>
+        }
+      />
+      {choice}
+      <div className="grid gap-x-[48px] gap-y-8 pb-10 xl:grid-cols-[454px_minmax(0,1fr)]">
+        <div className="min-w-0">
+          <BuilderControls
+            setting={setting}
+            settled={settled}
+            saved={version && start}
+            grid={grid}
+            sample={preview?.sample}
+            orbits={orbitWords(previewRun)}
+            profiles={profiles}
+            onSetting={change}
+          />
+          <InWords setting={setting} fault={fault} grid={grid} hasMaps={preview !== undefined} />
+        </div>
+        <div className="min-w-0">
+          {preview ? (
+            <>
+              <PopulationPreview
+                population={shown.definition}
+                setting={shown}
+                settled={settled}
+                preview={preview}
+                isFetchingMasses={isFetchingMasses}
+                onDefinition={(next, isSettled) =>
+                  change({ ...setting, definition: next }, isSettled)
+                }
+              />
+              {hasIndexPlane(settled.definition) && hasIndexPlane(shown.definition) && (
+                <PlaneSection sample={preview.sample} settled={settled} here={shown} />
+              )}
+            </>
+          ) : (
+            <PopulationAlone definition={definition} grid={grid} reason={reason} />
+          )}
+          {version && (
+            <div className="mt-7 grid gap-x-9 gap-y-7 lg:grid-cols-2">
+              <AgainstVersion
+                collaboration={collaboration}
+                versions={versions}
+                shown={version}
+                isChanged={isChanged}
+                now={settled.definition}
+                conventions={settled.conventions}
+                setting={settled}
+                sample={preview?.sample}
+              />
+              <VersionList collaboration={collaboration} versions={versions} shown={version} />
+            </div>
+          )}
+        </div>
+      </div>
+    </>
+  );
+}
+
+/** What could be seen along each axis, averaged over the law of the other one. */
+function useProfiles(preview: Preview | undefined, definition: LawDefinition) {
+  const deferred = useDeferredValue(definition);
+  return useMemo(() => {
+    const spread = preview && orNull(() => spreadOf(preview.sample, preview.map, deferred));
+    if (!spread) return undefined;
+    return {
+      mass: profileAlong(spread.map.completeness, spread.weights, 'mass'),
+      semiMajorAxis: profileAlong(spread.map.completeness, spread.weights, 'semiMajorAxis'),
+    };
+  }, [preview, deferred]);
+}
+
+function BuilderState({
+  version,
+  isChanged,
+}: {
+  version: ListedPopulation | undefined;
+  isChanged: boolean;
+}) {
+  if (!version) return <StateMark kind="unsaved">Not saved yet</StateMark>;
+  if (isChanged) return <StateMark kind="unsaved">Unsaved change</StateMark>;
+  return <StateMark kind="draft">{version.isShared ? 'Shared with all' : 'Draft'}</StateMark>;
+}

@@ -1,0 +1,8 @@
+import type { RunView } from '@/lib/schemas/runs';
+
+/** Where the orbits of a preview come from. */
+export function orbitWords(run: RunView | null): string {
+  const origin = 'Orbits belong to the maps: they are set with each survey.';
+  if (!run?.inputs) return `Isotropic. ${origin}`;
+  return `Isotropic; ${run.inputs.eccentricity}, in ${run.analysis.key}, run ${run.number}. ${origin}`;
+}
