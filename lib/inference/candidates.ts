@@ -5,7 +5,7 @@ import { poissonBinomial } from './frequentist';
 import { hostFractionLikelihood } from './host-fraction';
 import { integrateDensity } from './integrated-density';
 import { poissonLikelihood, type RateLikelihood } from './poisson';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 import { stretchesOf } from './product';
 
 /** Most candidates of a host fraction: every subset of them is weighed. */

@@ -29,7 +29,8 @@ function numberCoverage(setup: CalibrationSetup, rate: number, level: number): E
     const detectedStars = new Array<number>(count).fill(0);
     if (ratePosterior({ ...question, detectedStars }).cumulative(rate) <= level) covered += p;
   });
-  return { low: covered, high: covered };
+  const certain = Math.min(1, covered);
+  return { low: certain, high: certain };
 }
 
 /**
@@ -51,7 +52,8 @@ function fractionCoverage(setup: CalibrationSetup, rate: number, level: number):
     if (holds(seen.slice(0, count))) low += counts[count];
     if (holds(seen.slice(seen.length - count))) high += counts[count];
   }
-  return { low: Math.min(low, high), high: Math.max(low, high) };
+  // Sums of probabilities may end a rounding above 1.
+  return { low: Math.min(low, high, 1), high: Math.min(Math.max(low, high), 1) };
 }
 
 /**

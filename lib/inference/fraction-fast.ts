@@ -1,7 +1,7 @@
 import { antiderivative, chebyshevNodes, coefficients, evaluateSeries, NODES } from './chebyshev';
 import type { CheckedQuestion } from './checked-question';
 import { logNoDetection } from './host-fraction';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 import { NO_DATA, stretchesOf } from './product';
 
 /** ln density below its peak at which a panel no longer counts. */

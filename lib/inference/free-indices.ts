@@ -12,7 +12,8 @@ import { INDEX_NODES, type IndexRanges, type IndexTable, indexTable } from './in
 import { sumMaps } from './limit-map';
 import type { MeasuredDetection } from './measured-places';
 import { fractionRates, numberRates } from './node-rates';
-import { type PriorLaw, priorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
+import { priorLaw } from './priors';
 import { mixturePosterior, type RateMixture, rateRule } from './rate-mixture';
 
 /** What is asked when the two indices of a power law are free beside the rate. */

@@ -3,7 +3,7 @@ import { type CheckedQuestion, checkQuestion } from './checked-question';
 import type { RatePosterior, RatePrior, RateQuestion } from './contract';
 import { type IntegratedDensity, integrateDensity } from './integrated-density';
 import type { RateLikelihood } from './poisson';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './product';
 import { lawBelow } from './rate-scale';
 import { placeAt } from './stretches';

@@ -1,6 +1,6 @@
 import { integrateDensity, type Stretch } from './integrated-density';
 import type { RateLikelihood } from './poisson';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 import { fromOne, fromZero, type LogDensity, linear, logarithmic } from './stretches';
 
 /** What says nothing of the rate. */

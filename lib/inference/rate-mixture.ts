@@ -3,7 +3,7 @@ import type { RatePosterior, RatePrior, RateQuantity } from './contract';
 import { integrateDensity } from './integrated-density';
 import type { NodeRates } from './node-rates';
 import type { RateLikelihood } from './poisson';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 import { logPriorNorm, multiply, NO_DATA, stretchesOf } from './product';
 import { placeAt } from './stretches';
 

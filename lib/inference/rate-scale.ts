@@ -1,6 +1,7 @@
 import type { CheckedQuestion } from './checked-question';
 import type { RatePrior } from './contract';
-import { type PriorLaw, priorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
+import { priorLaw } from './priors';
 import { cutTable } from './tabulated-prior';
 
 /** A prior of the fraction cut at its largest value allowed, in units of that value. */

@@ -1,6 +1,6 @@
 import { intervalIndex } from '@/lib/numerics/grid';
 import type { Likelihood, RatePosterior } from './contract';
-import type { PriorLaw } from './priors';
+import type { PriorLaw } from './prior-law';
 
 /** A density of the rate, straight between points. */
 export interface DensityTable {

@@ -51,7 +51,11 @@ function computedMaps(optionName: string): Float64Array {
     const { curve: curveName, offset_mag: offset = 0, band } = star;
     const curve = contrastCurve(survey.curves[curveName], band, option.n_sigma, offset);
     const inputs = starInputs(star, [curve], option.age_nodes_per_half === 0);
-    const settings = sensitivitySettings(option.eccentricity, option.rule);
+    const settings = sensitivitySettings(
+      option.eccentricity,
+      option.rule,
+      option.age_nodes_per_half,
+    );
     return computeCompletenessMap(inputs, { kind: 'built-in' }, surveyGrid, settings).map
       .completeness;
   });

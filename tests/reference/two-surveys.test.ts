@@ -30,7 +30,13 @@ interface TwoSurveys {
   curves: Record<string, CurveInputs>;
   surveys: { name: string; stars: Entry[] }[];
   population: PopulationInputs;
-  option: { rule: 'hard' | 'smooth'; n_sigma: number; eccentricity: LawInputs };
+  option: {
+    rule: 'hard' | 'smooth';
+    n_sigma: number;
+    /** The values of this file carry the error of so many age nodes. */
+    age_nodes_per_half: number;
+    eccentricity: LawInputs;
+  };
 }
 
 const setup = readChecks('two-surveys')[0].inputs as unknown as TwoSurveys;
@@ -51,7 +57,8 @@ function mapOf(seen: Entry[]): CompletenessMap {
     massMjup: Float64Array.from(setup.masses_mjup),
     semiMajorAxisAu: Float64Array.from(setup.axes_au),
   };
-  const settings = sensitivitySettings(setup.option.eccentricity, setup.option.rule);
+  const { eccentricity, rule, age_nodes_per_half } = setup.option;
+  const settings = sensitivitySettings(eccentricity, rule, age_nodes_per_half);
   return computeCompletenessMap(star, { kind: 'built-in' }, grid, settings).map;
 }
 
