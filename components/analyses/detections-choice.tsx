@@ -1,20 +1,21 @@
 'use client';
 
+import type { ReactNode } from 'react';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { SurveyView } from '@/lib/schemas/surveys';
 
 interface DetectionsChoiceProps {
+  /** What is done with candidates without an answer; none counts where detections are set aside. */
+  children: ReactNode;
   chosen: AnalysisRecipe['detections'];
   surveys: SurveyView[];
   onChange(detections: AnalysisRecipe['detections']): void;
 }
 
-export function DetectionsChoice({ chosen, surveys, onChange }: DetectionsChoiceProps) {
-  const sum = (kind: 'confirmed' | 'candidate' | 'ambiguous') =>
-    surveys.reduce((total, survey) => total + survey.companions[kind], 0);
-  const undecided = sum('candidate') + sum('ambiguous');
+export function DetectionsChoice({ chosen, surveys, onChange, children }: DetectionsChoiceProps) {
+  const confirmed = surveys.reduce((total, survey) => total + survey.companions.confirmed, 0);
   return (
     <section>
       <SectionOpener number={3} title="Detections" />
@@ -29,9 +30,10 @@ export function DetectionsChoice({ chosen, surveys, onChange }: DetectionsChoice
         ]}
       />
       <p className="mt-2 text-ink3 text-note">
-        {sum('confirmed')} confirmed in these surveys, {undecided} undecided. Undecided ones never
-        count; they are named beside the number.
+        {confirmed} confirmed in these surveys.
+        {chosen === 'none' && ' With all detections set aside, candidates are set aside too.'}
       </p>
+      {chosen === 'counted' && children}
     </section>
   );
 }

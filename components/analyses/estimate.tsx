@@ -5,12 +5,12 @@ import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
-import { askedOf, orNull } from '@/components/runs/live-answer';
+import { askedOf } from '@/components/runs/live-answer';
 import { restrictSample, sampleOf } from '@/components/runs/live-sample';
 import type { LiveSetting } from '@/components/runs/live-setting';
 import { FactsStrip } from '@/components/ui/facts-strip';
 import { SectionOpener } from '@/components/ui/section-opener';
-import { answerFromView, describeLevel, viewPopulation } from '@/lib/inference';
+import { type Answer, answerFromView, describeLevel, viewPopulation } from '@/lib/inference';
 import { formatLimit, formatSignificant } from '@/lib/quantities/display';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyView } from '@/lib/schemas/surveys';
@@ -26,25 +26,32 @@ interface EstimateProps {
   needsRun?: boolean;
 }
 
+/** The answer of the stored maps, or why they give none. */
+interface Estimated {
+  answer?: Answer;
+  refusal?: string;
+}
+
 /** What the choices would give, from maps that a run has used already. */
 export function Estimate(props: EstimateProps) {
   const { collaboration, run, surveys, setting, needsRun = false } = props;
   const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
   const inputs = run?.inputs ?? undefined;
   const ids = surveys.map((survey) => survey.id).join();
-  const estimate = useMemo(() => {
-    if (!maps || !inputs || !setting) return null;
+  const { answer: estimate = null, refusal } = useMemo((): Estimated => {
+    if (!maps || !inputs || !setting) return {};
     const wanted = new Set(ids.split(','));
     const sample = restrictSample(sampleOf(inputs, maps), (star) =>
       star.surveys.some((survey) => wanted.has(survey)),
     );
-    if (sample.stars.length === 0) return null;
-    return orNull(() =>
-      answerFromView(
-        viewPopulation(sample.maps, sample.grid, setting.definition),
-        askedOf(sample, setting),
-      ),
-    );
+    if (sample.stars.length === 0) return {};
+    try {
+      const view = viewPopulation(sample.maps, sample.grid, setting.definition);
+      return { answer: answerFromView(view, askedOf(sample, setting)) };
+    } catch (reason) {
+      if (reason instanceof RangeError) return { refusal: reason.message };
+      throw reason;
+    }
   }, [maps, inputs, setting, ids]);
   const missing = surveys.filter(
     (survey) => !inputs?.surveys.some((known) => known.id === survey.id),
@@ -82,6 +89,7 @@ export function Estimate(props: EstimateProps) {
         <p className="text-ink2 text-note" aria-live="polite">
           {estimateWords({
             needsRun,
+            refusal,
             hasRun: run !== null,
             isLoading,
             error: error === undefined ? undefined : sentenceOf(error),
@@ -96,6 +104,7 @@ export function Estimate(props: EstimateProps) {
 
 function estimateWords(state: {
   needsRun: boolean;
+  refusal: string | undefined;
   hasRun: boolean;
   isLoading: boolean;
   error: string | undefined;
@@ -110,6 +119,7 @@ function estimateWords(state: {
   }
   if (state.error !== undefined) return `No estimate: ${state.error}`;
   if (state.isLoading) return 'Fetching the maps of the newest run.';
+  if (state.refusal !== undefined) return `No estimate: ${state.refusal}.`;
   if (!state.hasSurveys) return 'Choose a survey to see what it would give.';
   if (state.isUnconstrained) return 'The stored maps see nothing of this population.';
   return 'The maps of the newest run give no limit for these choices: they do not cover these stars or this population.';

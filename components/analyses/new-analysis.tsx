@@ -1,10 +1,11 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useState } from 'react';
+import { useMemo, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
+import { useCompanionsOf } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -14,11 +15,14 @@ import { analysisRecipeSchema } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyList } from '@/lib/schemas/surveys';
+import { CandidateChoice } from './candidate-choice';
+import { CombinationChoice } from './combination-choice';
 import { DetectionsChoice } from './detections-choice';
 import { Estimate } from './estimate';
 import { suggestName } from './name-words';
+import { tallyOpen } from './open-candidates';
 import { PopulationChoice } from './population-choice';
-import { RateChoice } from './rate-choice';
+import { RateChoice, type RateSetting } from './rate-choice';
 import { SurveyChoice } from './survey-choice';
 
 interface NewAnalysisProps {
@@ -30,6 +34,12 @@ interface NewAnalysisProps {
   /** Population asked for in the address. */
   wanted?: string;
 }
+
+const FIRST_RATE: RateSetting = {
+  likelihood: 'host-fraction',
+  prior: { law: 'uniform', max: 1 },
+  credibleLevel: 0.95,
+};
 
 /** One page, four choices with sensible defaults, and what they would give. */
 export function NewAnalysis(props: NewAnalysisProps) {
@@ -47,9 +57,9 @@ export function NewAnalysis(props: NewAnalysisProps) {
     )?.id ?? '',
   );
   const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
-  const [likelihood, setLikelihood] = useState<AnalysisRecipe['likelihood']>('host-fraction');
-  const [prior, setPrior] = useState<AnalysisRecipe['prior']>({ law: 'uniform', max: 1 });
-  const [credibleLevel, setCredibleLevel] = useState(0.95);
+  const [candidates, setCandidates] = useState<AnalysisRecipe['candidates']>();
+  const [combination, setCombination] = useState<AnalysisRecipe['combination']>('default');
+  const [rate, setRate] = useState<RateSetting>(FIRST_RATE);
   const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
   const [ownName, setOwnName] = useState<string>();
   const [busy, setBusy] = useState<'create' | 'run'>();
@@ -57,16 +67,23 @@ export function NewAnalysis(props: NewAnalysisProps) {
 
   const population = populations.find((candidate) => candidate.id === populationId);
   const chosenSurveys = offered.filter((survey) => chosen.includes(survey.id));
+  const companions = useCompanionsOf(
+    collaboration,
+    chosenSurveys.map(({ slug }) => slug),
+  );
+  const tally = useMemo(
+    () => population && companions.data && tallyOpen(companions.data, population.definition),
+    [population, companions.data],
+  );
   const name = ownName ?? (population ? suggestName(population.definition, chosen.length) : '');
   const recipe = {
     surveyIds: chosen,
     populationId,
-    likelihood,
-    prior,
-    credibleLevel,
+    ...rate,
     detections,
-    combination: 'default' as const,
+    combination,
     zeroOutsideMaps,
+    ...(candidates && detections === 'counted' && { candidates }),
   };
   const checked = analysisRecipeSchema.safeParse(recipe);
   const fault = faultWords(checked.success ? undefined : checked.error.issues[0], name);
@@ -100,7 +117,9 @@ export function NewAnalysis(props: NewAnalysisProps) {
             chosen={chosen}
             onChange={setChosen}
             address={`/${collaboration}/surveys`}
-          />
+          >
+            <CombinationChoice chosen={combination} onChange={setCombination} />
+          </SurveyChoice>
           <PopulationChoice
             collaboration={collaboration}
             populations={populations}
@@ -110,16 +129,20 @@ export function NewAnalysis(props: NewAnalysisProps) {
             zeroOutsideMaps={zeroOutsideMaps}
             onZeroOutsideMaps={setZeroOutsideMaps}
           />
-          <DetectionsChoice chosen={detections} surveys={chosenSurveys} onChange={setDetections} />
+          <DetectionsChoice chosen={detections} surveys={chosenSurveys} onChange={setDetections}>
+            <CandidateChoice
+              chosen={candidates}
+              likelihood={rate.likelihood}
+              tally={tally}
+              fault={companions.error === undefined ? undefined : sentenceOf(companions.error)}
+              onChange={setCandidates}
+            />
+          </DetectionsChoice>
           <RateChoice
-            likelihood={likelihood}
-            prior={prior}
-            credibleLevel={credibleLevel}
-            onChange={(next) => {
-              setLikelihood(next.likelihood);
-              setPrior(next.prior);
-              setCredibleLevel(next.credibleLevel);
-            }}
+            {...rate}
+            collaboration={collaboration}
+            surveyIds={chosen}
+            onChange={setRate}
           />
         </div>
         <aside className="min-w-0 xl:sticky xl:top-6 xl:self-start">
@@ -179,6 +202,10 @@ function faultWords(
   const [field, part] = issue.path;
   if (field === 'surveyIds') return 'Choose at least one survey.';
   if (field === 'populationId') return 'Choose a population.';
+  if (field === 'background') return 'The false detections expected must be a number above 0.';
+  if (field === 'prior' && part === 'value') {
+    return 'Choose the run whose posterior is the prior.';
+  }
   if (field === 'credibleLevel') return 'The level must be more than 0 and less than 100 %.';
   return `${String(field)}${part === undefined ? '' : `, ${String(part)}`}: ${issue.message}.`;
 }

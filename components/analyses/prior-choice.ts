@@ -17,7 +17,7 @@ export const lawNames: Record<PriorLaw, string> = {
   'log-uniform': 'log-uniform',
   beta: 'beta',
   gamma: 'gamma',
-  tabulated: 'table',
+  tabulated: 'posterior of a run',
 };
 
 /** The laws that a likelihood takes. */

@@ -1,5 +1,6 @@
 'use client';
 
+import type { ReactNode } from 'react';
 import { seriesColour } from '@/components/charts/series';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { EmptyState } from '@/components/ui/empty-state';
@@ -14,9 +15,12 @@ interface SurveyChoiceProps {
   onChange(ids: string[]): void;
   /** Where surveys are made. */
   address: string;
+  /** What follows the list: the rule for stars in several of them. */
+  children?: ReactNode;
 }
 
-export function SurveyChoice({ surveys, overlaps, chosen, onChange, address }: SurveyChoiceProps) {
+export function SurveyChoice(props: SurveyChoiceProps) {
+  const { surveys, overlaps, chosen, onChange, address } = props;
   const picked = surveys.filter((survey) => chosen.includes(survey.id));
   const entries = picked.reduce((sum, survey) => sum + survey.targets, 0);
   const stars = countStars(overlaps, picked);
@@ -67,6 +71,7 @@ export function SurveyChoice({ surveys, overlaps, chosen, onChange, address }: S
           <p className="mt-1 text-ink3 text-note">
             A star in several surveys counts once, with one combined map.
           </p>
+          {picked.length > 1 && props.children}
         </div>
       )}
     </section>

@@ -23,6 +23,10 @@ export function useRun(collaboration: string, id: string | undefined, fallback?:
   );
 }
 
+export function fetchRun(collaboration: string, id: string): Promise<RunView> {
+  return request(apiPath(collaboration, 'runs', id), runSchema);
+}
+
 export function startRun(collaboration: string, analysis: string): Promise<RunSummary> {
   return request(apiPath(collaboration, 'analyses', analysis, 'runs'), runSummarySchema, {
     method: 'POST',

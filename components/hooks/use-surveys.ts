@@ -86,6 +86,21 @@ export function useCompanions(collaboration: string, slug: string, fallback: Com
   );
 }
 
+/** Companions and candidates of several surveys together. */
+export function useCompanionsOf(collaboration: string, slugs: string[]) {
+  const schema = z.object({ companions: z.array(companionSchema) });
+  return useSWR(
+    slugs.length === 0 ? null : ['companions of', collaboration, ...slugs],
+    async () => {
+      const lists = await Promise.all(
+        slugs.map((slug) => request(apiPath(collaboration, 'surveys', slug, 'companions'), schema)),
+      );
+      return lists.flatMap(({ companions }) => companions);
+    },
+    { revalidateOnFocus: false, keepPreviousData: true },
+  );
+}
+
 /** One stored map; a map never changes. */
 export function useMap(collaboration: string, id: string | null) {
   return useSWR<MapView>(
