@@ -40,6 +40,18 @@ const kept = [
   'opacity',
 ];
 
+const marks = ['path', 'line', 'rect', 'circle', 'ellipse', 'text', 'tspan'];
+
+/** What a mark has without being told. */
+const usual: Record<string, string> = {
+  'fill-opacity': '1',
+  stroke: 'none',
+  'stroke-opacity': '1',
+  'stroke-dasharray': 'none',
+  'stroke-linejoin': 'miter',
+  opacity: '1',
+};
+
 /** Tokens of the light theme, whichever theme the page shows: figures are always light. */
 function lightTokens(): [name: string, value: string][] {
   for (const sheet of document.styleSheets) {
@@ -74,7 +86,7 @@ export function drawingToSvg(
   column: keyof typeof inches = 'double',
 ): string {
   const [, , width, height] = (drawing.getAttribute('viewBox') ?? '0 0 0 0').split(' ').map(Number);
-  const marks = withLightStyles(drawing, width);
+  const content = withLightStyles(drawing, width);
   const lines = words.caption.flatMap((line) => wrapLine(line, width, captionPx));
   const total = {
     width: width + 2 * padding,
@@ -87,7 +99,7 @@ export function drawingToSvg(
     `<desc>${escapeXml(words.description)}</desc>`,
     `<rect width="${total.width}" height="${total.height}" fill="#ffffff"/>`,
     `<text x="${total.width - padding}" y="${padding + 8}" font-size="${captionPx}" font-weight="600" fill="#0b2326" text-anchor="end">${escapeXml(words.label)}</text>`,
-    `<g transform="translate(${padding} ${padding + headPx})">${marks}</g>`,
+    `<g transform="translate(${padding} ${padding + headPx})">${content}</g>`,
     ...lines.map(
       (line, index) =>
         `<text x="${padding}" y="${padding + headPx + height + (index + 1) * linePx}" font-size="${captionPx}" fill="#344d4f">${escapeXml(line)}</text>`,
@@ -108,7 +120,7 @@ function withLightStyles(drawing: SVGSVGElement, width: number): string {
   document.body.append(host);
   try {
     for (const element of copy.querySelectorAll<SVGElement>('*')) {
-      if (element.localName !== 'g' && element.localName !== 'clipPath') writeStyle(element);
+      if (marks.includes(element.localName)) writeStyle(element);
     }
     for (const element of copy.querySelectorAll('[class]')) element.removeAttribute('class');
     return [...copy.childNodes].map((node) => new XMLSerializer().serializeToString(node)).join('');
@@ -124,7 +136,8 @@ function writeStyle(element: SVGElement): void {
   for (const [name, value] of found) {
     const isText = name.startsWith('font') || name === 'text-anchor';
     if (isText && element.localName !== 'text' && element.localName !== 'tspan') continue;
-    if (value !== '' && value !== 'normal') element.setAttribute(name, hexColour(value));
+    if (value === '' || value === 'normal' || value === usual[name]) element.removeAttribute(name);
+    else element.setAttribute(name, hexColour(value));
   }
 }
 
