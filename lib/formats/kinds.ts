@@ -109,6 +109,8 @@ export interface TargetRecord {
   binaryEccentricity: number | null;
   binaryMassRatio: number | null;
   debrisDisk: boolean | null;
+  /** The survey lists it because a companion was known: no fair draw. */
+  selectedForCompanion: boolean | null;
   notes: string | null;
   reference: string | null;
 }
@@ -217,10 +219,59 @@ export interface ColumnReading {
   unit: string | null;
 }
 
+export type PreviewCell = string | number | null;
+
+/** The beginning of a file as it was read, small enough to be sent to a screen. */
+export interface Preview {
+  /** The first rows in our columns and units; null where the file is no table. */
+  table: { columns: { name: string; unit: string | null }[]; rows: PreviewCell[][] } | null;
+  curves: {
+    target: string;
+    band: string;
+    epoch: string | null;
+    nSigma: number;
+    separationArcsec: number[];
+    contrastMag: number[];
+  }[];
+  /** Values at nodes, shape [mass, semiMajorAxis]. */
+  maps: {
+    target: string;
+    massMjup: number[];
+    semiMajorAxisAu: number[];
+    completeness: number[];
+  }[];
+}
+
+/** A line of a text file at fault, with the lines around it. */
+export interface Excerpt {
+  line: number;
+  before: string | null;
+  text: string;
+  after: string | null;
+}
+
+/** Rows at fault with their cells as written, one entry a fault. */
+export interface OffendingRows {
+  headings: string[];
+  rows: {
+    place: string;
+    cells: string[];
+    column: string | null;
+    code: string;
+    found: string;
+    expected: string;
+  }[];
+  /** How many there are in all; `rows` may list fewer. */
+  count: number;
+}
+
 export interface ReadSuccess<K extends UploadKind> {
   ok: true;
   kind: K;
   container: Container;
+  /** Which part of the container was read, such as `HDU 2`. */
+  part: string | null;
+  preview: Preview;
   records: RecordsOfKind[K];
   notes: Note[];
   columns: ColumnReading[];
@@ -235,6 +286,10 @@ export interface ReadFailure {
   faultCount: number;
   notes: Note[];
   columns: ColumnReading[];
+  /** Of text files. */
+  excerpts: Excerpt[];
+  /** Of tables. */
+  offending: OffendingRows | null;
 }
 
 /** Narrow by `ok`, then by `kind`. */

@@ -31,6 +31,7 @@ export const targetColumns: readonly ColumnSpec[] = [
   { name: 'binary_eccentricity', unit: 'plain number' },
   { name: 'binary_mass_ratio', unit: 'plain number' },
   { name: 'debris_disk' },
+  { name: 'selected_for_companion' },
   { name: 'notes' },
   { name: 'reference' },
 ];

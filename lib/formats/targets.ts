@@ -84,6 +84,7 @@ function readTarget(
     magnitudes: readMagnitudes(reading, row, bands),
     ...readBinary(reading, row),
     debrisDisk: reading.boolean('debris_disk', row) ?? null,
+    selectedForCompanion: reading.boolean('selected_for_companion', row) ?? null,
     notes: removeFormulaGuard(reading.prose('notes', row) ?? null),
     reference: reading.text('reference', row, 1000) ?? null,
   };

@@ -49,6 +49,7 @@ const fixedColumns: readonly (readonly [string, Value])[] = [
   ['binary_eccentricity', (t) => t.binaryEccentricity],
   ['binary_mass_ratio', (t) => t.binaryMassRatio],
   ['debris_disk', (t) => t.debrisDisk],
+  ['selected_for_companion', (t) => t.selectedForCompanion],
 ];
 
 const lastColumns: readonly (readonly [string, Value])[] = [

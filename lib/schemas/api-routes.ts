@@ -1,4 +1,4 @@
-import { type ZodObject, type ZodType, z } from 'zod';
+import { z } from 'zod';
 import {
   changePasswordSchema,
   collaborationSchema,
@@ -14,6 +14,7 @@ import {
   createAnalysisSchema,
   updateAnalysisSchema,
 } from './analyses';
+import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
 import { idSchema, pageSchema, roleSchema } from './common';
 import { jobSchema } from './jobs';
@@ -39,6 +40,7 @@ import {
 } from './population-versions';
 import { createPopulationSchema, populationSchema } from './populations';
 import { runSchema, runSummarySchema } from './runs';
+import { sampleRoutes } from './sample-routes';
 import { mapViewSchema } from './sensitivity';
 import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
 import {
@@ -54,29 +56,9 @@ import {
 } from './surveys';
 import { uploadQuerySchema, uploadSchema, uploadSettingsSchema } from './uploads';
 
-export type ApiMethod = 'get' | 'post' | 'patch' | 'delete';
+export type { ApiMethod, ApiRoute } from './api-route';
 
-/** One method of one address: what it takes, what it answers, who may ask. */
-export interface ApiRoute {
-  method: ApiMethod;
-  path: string;
-  summary: string;
-  /** A token's scope; `session` needs a signed-in person, `open` nobody. */
-  access: 'read' | 'write' | 'run' | 'session' | 'open';
-  query?: ZodObject;
-  body?: ZodType;
-  /** The body is a file, streamed. */
-  isUpload?: boolean;
-  status?: number;
-  answer?: ZodType;
-  /** Content types of an answer that is a file or bytes, besides JSON. */
-  files?: readonly string[];
-}
-
-const team = '/api/v1/collaborations/{collaboration}';
 const bytes = ['application/octet-stream'];
-const listOf = <Key extends string>(key: Key, schema: ZodType) =>
-  z.object({ [key]: z.array(schema) });
 const surveyMapsSchema = z.object({
   job: jobSchema.nullable(),
   maps: z.array(
@@ -96,16 +78,6 @@ const membershipSchema = z.object({
   name: z.string(),
   roles: z.array(roleSchema),
 });
-
-type Rest = Omit<ApiRoute, 'method' | 'path' | 'summary' | 'access'>;
-type Access = ApiRoute['access'];
-const route = (
-  method: ApiMethod,
-  path: string,
-  access: Access,
-  summary: string,
-  rest: Rest = {},
-): ApiRoute => ({ method, path, access, summary, ...rest });
 
 const people: ApiRoute[] = [
   route('post', '/api/v1/sign-up', 'open', 'Make an account', {
@@ -214,10 +186,16 @@ const surveys: ApiRoute[] = [
     answer: jobSchema,
   }),
   route('get', `${team}/targets/{target}`, 'read', 'One target', { answer: targetSchema }),
-  route('patch', `${team}/targets/{target}`, 'write', 'Leave a target out, or take it in again', {
-    body: leaveOutSchema,
-    answer: targetSchema,
-  }),
+  route(
+    'patch',
+    `${team}/targets/{target}`,
+    'write',
+    'Leave a target out, or mark how it was chosen',
+    {
+      body: leaveOutSchema,
+      answer: targetSchema,
+    },
+  ),
   route(
     'get',
     `${team}/maps/{map}`,
@@ -343,4 +321,4 @@ const itself = route('get', '/api/v1/openapi.json', 'open', 'This document', {
 });
 
 /** Every method of every address below /api/v1. */
-export const apiRoutes: readonly ApiRoute[] = [itself, ...people, ...surveys, ...analyses];
+export const apiRoutes: readonly ApiRoute[] = [itself, ...people, ...surveys, ...sampleRoutes, ...analyses];

@@ -50,6 +50,17 @@ export const runInputsSchema = z.object({
   cooling: z.string(),
   eccentricity: z.string(),
   threshold: z.string(),
+  /** The selection of stars, where the recipe names one. */
+  sample: z
+    .object({
+      id: idSchema,
+      key: z.string(),
+      version: z.number(),
+      name: z.string(),
+      words: z.string(),
+      digest: z.string(),
+    })
+    .optional(),
   /** In the order of all sums: by name. */
   stars: z.array(
     z.object({

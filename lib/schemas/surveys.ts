@@ -122,13 +122,24 @@ export const targetSchema = z.object({
   probability: z.number().nullable(),
   alsoIn: z.array(z.object({ slug: z.string(), name: z.string(), position: z.number() })),
   leftOutReason: z.string().nullable(),
+  /** The survey lists it because a companion was known: runs leave such an entry out. */
+  selectedForCompanion: z.boolean(),
   /** What a reader should know: "no age error", "starts at 0.31″". */
   checks: z.array(z.string()),
 });
 export type TargetView = z.infer<typeof targetSchema>;
 export const targetListSchema = z.object({ targets: z.array(targetSchema), total: z.number() });
 export type TargetList = z.infer<typeof targetListSchema>;
-export const leaveOutSchema = z.strictObject({ leftOutReason: lineSchema(300).nullable() });
+export const leaveOutSchema = z
+  .strictObject({
+    leftOutReason: lineSchema(300).nullable().optional(),
+    selectedForCompanion: z.boolean().optional(),
+  })
+  .refine(
+    (given) => Object.keys(given).length > 0,
+    'one of leftOutReason and selectedForCompanion',
+  );
+export type MarkTarget = z.infer<typeof leaveOutSchema>;
 
 export const coolingTableSchema = z.object({
   id: idSchema,

@@ -19,6 +19,7 @@ import {
   PersonRow,
   PopulationRow,
   RunRow,
+  SampleRow,
   SurveyRow,
 } from '@/models';
 import { canonicalJson } from '@/models/digest';
@@ -133,6 +134,9 @@ async function checkRecipe(
     transaction,
   });
   if (population === 0) throw new NotFound('population');
+  if (recipe.sampleId === undefined) return;
+  const sample = { collaborationId, id: recipe.sampleId };
+  if ((await SampleRow.count({ where: sample, transaction })) === 0) throw new NotFound('sample');
 }
 
 /** The next number of the collaboration, under a lock on its row. */

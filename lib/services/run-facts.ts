@@ -1,6 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { database } from '@/models';
+import { OUTSIDE_SAMPLE } from '@/models/sample-selection';
 
 type RunFacts = Omit<RunSummary, 'job'> & { analysisId: string; jobId: string };
 
@@ -24,6 +25,11 @@ interface Row {
   hasOlderInputs: boolean;
 }
 
+/** A target that a run of this recipe counts, apart from what its sample asks of the star. */
+const IS_COUNTED = `t.left_out_reason is null
+        and (chosen.definition->>'knownCompanion' = 'kept'
+          or t.attributes->>'selectedForCompanion' is distinct from 'true')`;
+
 /**
  * Whether the surveys have changed since a run read them: other stars, another map of a star that
  * one survey lists, or a target, curve, map or companion that came later.
@@ -40,12 +46,16 @@ const OLDER_INPUTS = `
           > j.started_at)
     or exists (
       select t.star_id from target t
-      where t.survey_id = any(q.survey_ids) and t.left_out_reason is null and t.map_id is not null
+      where t.survey_id = any(q.survey_ids) and t.map_id is not null and ${IS_COUNTED}
+        and not (chosen.id is not null and exists (
+          select 1 from jsonb_to_recordset(r.inputs->'leftOut') as l(name text, survey text, reason text)
+            join survey v on v.id = t.survey_id and v.name = l.survey
+          where l.name = t.name and l.reason = '${OUTSIDE_SAMPLE}'))
       except select star_id from run_star where run_id = r.id)
     or exists (
       select s.star_id from run_star s where s.run_id = r.id
       except select t.star_id from target t
-      where t.survey_id = any(q.survey_ids) and t.left_out_reason is null and t.map_id is not null)
+      where t.survey_id = any(q.survey_ids) and t.map_id is not null and ${IS_COUNTED})
     or exists (
       select 1 from run_star s join target t
         on t.star_id = s.star_id and t.survey_id = s.survey_ids[1]
@@ -64,6 +74,7 @@ const FACTS = `
     (r.result->>'stars')::int as stars, r.result_digest as "resultDigest",
     ${OLDER_INPUTS} as "hasOlderInputs"
   from run r join job j on j.id = r.job_id left join person p on p.id = r.created_by
+    left join sample chosen on chosen.id = (r.recipe->>'sampleId')::uuid
     cross join lateral (
       select array(select jsonb_array_elements_text(r.recipe->'surveyIds')::uuid) as survey_ids) q
   where r.analysis_id = any($1::uuid[])

@@ -123,6 +123,8 @@ async function refuseUnanswerable(
   });
   if (!population) throw new NotFound('population');
   if (recipe.zeroOutsideMaps || selection.massMinMjup === null) return;
+  // Maps of stars outside a sample do not matter: the run itself looks at those that do.
+  if (recipe.sampleId !== undefined) return;
   // The masses of a mass ratio are each star's own: the run itself finds out whether they fit.
   if (population.definition.form === 'mass-ratio') return;
   const outside = findEdgeOutside(populationBox(population.definition), selection);

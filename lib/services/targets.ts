@@ -4,7 +4,7 @@ import { demand } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { logSpacedAxis } from '@/lib/numerics/grid';
 import { idSchema } from '@/lib/schemas/common';
-import type { CompanionView, TargetList, TargetView } from '@/lib/schemas/surveys';
+import type { CompanionView, MarkTarget, TargetList, TargetView } from '@/lib/schemas/surveys';
 import {
   CompanionRow,
   ContrastCurveRow,
@@ -13,6 +13,7 @@ import {
   SurveyRow,
   TargetRow,
 } from '@/models';
+import { wasChosenForCompanion } from '@/models/sample-selection';
 import { recordAudit } from './audit';
 import { currentYardstick, summariseMaps } from './survey-depth';
 import { findSurvey, isLead } from './surveys';
@@ -95,6 +96,7 @@ function describeTarget(
     probability,
     alsoIn,
     leftOutReason: target.leftOutReason,
+    selectedForCompanion: wasChosenForCompanion(target),
     checks: checksOf(target, curves),
   };
 }
@@ -170,18 +172,27 @@ export async function getTarget(actor: Actor, id: string): Promise<TargetView> {
   return (await describeTargets(survey, [target]))[0];
 }
 
-/** Leaves a target out of every later run, with a reason; null takes it back in. */
-export async function leaveTargetOut(
+/**
+ * Leaves a target out of every later run with a reason, where null takes it back in; or marks it as
+ * chosen because a companion was known.
+ */
+export async function markTarget(
   actor: Actor,
   id: string,
-  reason: string | null,
+  { leftOutReason: reason, selectedForCompanion: mark }: MarkTarget,
 ): Promise<TargetView> {
   const { target, survey } = await findTarget(actor, id);
   demand(actor, 'change-survey', { isLead: isLead(actor, survey) });
   await inTransaction(async (transaction) => {
-    await target.update({ leftOutReason: reason }, { transaction });
-    const words =
-      reason === null ? `took ${target.name} back in` : `left ${target.name} out: ${reason}`;
+    const attributes = { ...target.attributes, selectedForCompanion: mark };
+    await target.update(
+      {
+        ...(reason !== undefined && { leftOutReason: reason }),
+        ...(mark !== undefined && { attributes }),
+      },
+      { transaction },
+    );
+    const words = markWords(target.name, reason, mark);
     await recordAudit(
       actor,
       'change-survey',
@@ -191,6 +202,19 @@ export async function leaveTargetOut(
     );
   });
   return getTarget(actor, id);
+}
+
+function markWords(
+  name: string,
+  reason: string | null | undefined,
+  mark: boolean | undefined,
+): string {
+  const words: string[] = [];
+  if (reason !== undefined)
+    words.push(reason === null ? `took ${name} back in` : `left ${name} out: ${reason}`);
+  if (mark === true) words.push(`marked ${name} as chosen because a companion was known`);
+  if (mark === false) words.push(`marked ${name} as not chosen for a known companion`);
+  return words.join('; ');
 }
 
 /** Companions and candidates of a survey's targets. */

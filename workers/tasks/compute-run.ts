@@ -117,7 +117,7 @@ function collect({ attempt }: Work): Promise<Collected> {
       transaction,
     });
     if (!population) throw new NotFound('population');
-    const sample = await collectSample(collaborationId, run.recipe.surveyIds, transaction);
+    const sample = await collectSample(collaborationId, run.recipe, transaction);
     const hostMassMsun = hostMassesFor(population.definition, sample.stars);
     const companions = await mergeCompanions(sample.stars, population.definition, transaction);
     return { run, population, sample, hostMassMsun, companions };
@@ -165,6 +165,7 @@ function describeInputs(
     })),
     combination: describeCombination(run.recipe.combination, shared, sample.surveys.length),
     ...describeMaps(sample),
+    ...(sample.selection && { sample: sample.selection }),
     stars: stack.stars,
     companions: companions.confirmed,
     undecided: companions.undecided.map((candidate) => ({ ...candidate })),

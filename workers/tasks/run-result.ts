@@ -150,6 +150,10 @@ function extraConditions({ inputs, stack, counted, output, warnings }: Parts): s
   const { shareFlaggedCooling } = stack;
   const { outside, mergedNames } = counted;
   const conditions = [...warnings];
+  if (inputs.sample) {
+    const { key, version, name, words } = inputs.sample;
+    conditions.push(`Sample: ${key} version ${version}, ${name}: ${words}`);
+  }
   if (output.missingColumn !== null) conditions.push(`Table of limits: ${output.missingColumn}`);
   if (shareFlaggedCooling > 0) {
     const share = (100 * shareFlaggedCooling).toPrecision(2);

@@ -1,9 +1,12 @@
 import type { Transaction } from 'sequelize';
 import { InputError } from '@/lib/errors';
 import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
+import { findLeftOut } from '@/models/sample-selection';
 import { loadRecipe, type MapRecipe } from './map-recipe';
+import { loadSelection, type Selection } from './run-selection';
 import { openCandidates } from './star-facts';
 
 /** A survey of the run with the recipe of its maps. */
@@ -34,6 +37,8 @@ export interface Sample {
   /** By name: the order of every sum. */
   stars: SampleStar[];
   leftOut: RunInputs['leftOut'];
+  /** The selection that the recipe names. */
+  selection: Selection['words'] | null;
 }
 
 type LoadedTarget = TargetRow & { star: StarRow };
@@ -100,25 +105,35 @@ const byName = (a: { name: string }, b: { name: string }) =>
  */
 export async function collectSample(
   collaborationId: string,
-  surveyIds: string[],
+  { surveyIds, sampleId }: Pick<AnalysisRecipe, 'surveyIds' | 'sampleId'>,
   transaction: Transaction,
 ): Promise<Sample> {
   const surveys = await loadSurveys(collaborationId, surveyIds, transaction);
+  const selection = sampleId ? await loadSelection(collaborationId, sampleId, transaction) : null;
   const { targets, mapOf, curvesOf } = await loadTargets(
     surveys.map(({ row }) => row.id),
     transaction,
+  );
+  const ordered = surveys.flatMap(({ row }) =>
+    targets.filter(({ surveyId }) => surveyId === row.id).sort(byName),
+  );
+  const unselected = findLeftOut(
+    ordered.filter(({ leftOutReason }) => leftOutReason === null),
+    selection?.definition ?? null,
   );
   const leftOut: Sample['leftOut'] = [];
   const withoutMap: string[] = [];
   const stars = new Map<string, SampleStar>();
   for (const survey of surveys) {
-    const own = targets.filter(({ surveyId }) => surveyId === survey.row.id).sort(byName);
+    const own = ordered.filter(({ surveyId }) => surveyId === survey.row.id);
     for (const target of own) {
       const curves = curvesOf.get(target.id) ?? [];
       const map = target.mapState === 'ready' && target.mapId ? mapOf.get(target.mapId) : undefined;
       const leaveOut = (reason: string) =>
         leftOut.push({ name: target.name, survey: survey.row.name, reason });
+      const unmet = unselected.get(target);
       if (target.leftOutReason !== null) leaveOut(target.leftOutReason);
+      else if (unmet) leaveOut(unmet.reason);
       else if (map) addEntry(stars, target.star, { target, survey, map, curves });
       else if (target.mapState === 'none' && curves.length === 0) leaveOut('no curve and no map');
       else withoutMap.push(target.name);
@@ -127,7 +142,8 @@ export async function collectSample(
   refuseMissingMaps(withoutMap);
   const nothing = findEmptySelection(stars.size, targets.length);
   if (nothing) throw new InputError(nothing);
-  return { surveys, stars: [...stars.values()].sort(byName), leftOut };
+  const ofStars = [...stars.values()].sort(byName);
+  return { surveys, stars: ofStars, leftOut, selection: selection?.words ?? null };
 }
 
 function addEntry(stars: Map<string, SampleStar>, star: StarRow, entry: Entry): void {

@@ -30,7 +30,7 @@ export async function loadRunSample(given: StudyWork): Promise<Sample> {
   const { run, work, grid, collaborationId } = given;
   const { REPEATABLE_READ: isolationLevel } = Transaction.ISOLATION_LEVELS;
   const sample = await database().transaction({ isolationLevel }, (transaction) =>
-    collectSample(collaborationId, run.recipe.surveyIds, transaction),
+    collectSample(collaborationId, run.recipe, transaction),
   );
   const changed = new Set(findChangedEntries(sample.stars));
   const digests = await combineMaps(

@@ -6,7 +6,7 @@ import { canonicalJson } from '@/models/digest';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 
 /** Columns of the target table that a file states; everything else goes into `attributes`. */
-function fieldsOf(record: TargetRecord) {
+function fieldsOf(record: TargetRecord, before?: TargetRow) {
   const { line, otherNames, ...rest } = record;
   return {
     name: record.name,
@@ -39,12 +39,19 @@ function fieldsOf(record: TargetRecord) {
       binaryEccentricity: rest.binaryEccentricity,
       binaryMassRatio: rest.binaryMassRatio,
       debrisDisk: rest.debrisDisk,
+      ...markOf(record, before),
       notes: rest.notes,
       reference: rest.reference,
     },
   };
 }
 type TargetFields = ReturnType<typeof fieldsOf>;
+
+/** A file that says nothing of it leaves a person's mark as it is. */
+function markOf({ selectedForCompanion }: TargetRecord, before?: TargetRow) {
+  const mark = selectedForCompanion ?? before?.attributes.selectedForCompanion;
+  return typeof mark === 'boolean' ? { selectedForCompanion: mark } : {};
+}
 
 const isUnchanged = (row: TargetRow, fields: TargetFields) =>
   (Object.keys(fields) as (keyof TargetFields)[]).every(
@@ -125,7 +132,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
         expected: `${star.gaiaDr3Id}, by which "${star.name}" is known`,
       });
     }
-    const unchanged = target !== undefined && isUnchanged(target, fieldsOf(record));
+    const unchanged = target !== undefined && isUnchanged(target, fieldsOf(record, target));
     steps.push({ record, target, star, isUnchanged: unchanged });
     const outcome = target ? (unchanged ? 'unchanged' : 'replaces') : star ? 'known-star' : 'new';
     items.push({ name: record.name, outcome, summary: describeRecord(record) });
@@ -139,7 +146,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
     needsMaps: changed.some((step) => step.target !== undefined),
     apply: async (transaction, uploadId) => {
       for (const { record, target, star } of changed) {
-        const fields = fieldsOf(record);
+        const fields = fieldsOf(record, target);
         const owner =
           star ??
           (await StarRow.create(

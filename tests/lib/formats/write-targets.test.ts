@@ -125,6 +125,7 @@ const absent: WrittenTarget = {
   binaryEccentricity: null,
   binaryMassRatio: null,
   debrisDisk: null,
+  selectedForCompanion: null,
   notes: null,
   reference: null,
 };
@@ -164,6 +165,7 @@ const target: fc.Arbitrary<WrittenTarget> = fc
       binaryEccentricity: orNull(fc.double({ min: 0, max: 1 - Number.EPSILON, noNaN: true })),
       binaryMassRatio: orNull(fc.double({ min: Number.MIN_VALUE, max: 1, noNaN: true })),
       debrisDisk: orNull(fc.boolean()),
+      selectedForCompanion: orNull(fc.boolean()),
       notes: orNull(prose),
       reference: orNull(plainText(30)),
     }),

@@ -1,6 +1,6 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
 import { leaveOutSchema } from '@/lib/schemas/surveys';
-import { getTarget, leaveTargetOut } from '@/lib/services/targets';
+import { getTarget, markTarget } from '@/lib/services/targets';
 
 export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
   getTarget(actor, params.target),
@@ -8,5 +8,5 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 
 export const PATCH = collaborationRoute(
   { scope: 'write', body: leaveOutSchema },
-  ({ actor, params, body }) => leaveTargetOut(actor, params.target, body.leftOutReason),
+  ({ actor, params, body }) => markTarget(actor, params.target, body),
 );

@@ -1,0 +1,23 @@
+import { type ApiRoute, listOf, route, team } from './api-route';
+import {
+  createSampleSchema,
+  previewSampleSchema,
+  samplePreviewSchema,
+  sampleSchema,
+} from './samples';
+
+/** Selections of stars. */
+export const sampleRoutes: readonly ApiRoute[] = [
+  route('get', `${team}/samples`, 'read', 'Every version of every sample', {
+    answer: listOf('samples', sampleSchema),
+  }),
+  route('post', `${team}/samples`, 'write', 'Save a sample, or a new version of one', {
+    body: createSampleSchema,
+    status: 201,
+    answer: sampleSchema,
+  }),
+  route('post', `${team}/samples/preview`, 'read', 'What a selection of stars would hold', {
+    body: previewSampleSchema,
+    answer: samplePreviewSchema,
+  }),
+];
