@@ -5,6 +5,8 @@ import { AnalysisRow, defineAnalysis } from './analysis';
 import { AuditEntryRow, defineAuditEntry } from './audit-entry';
 import { CollaborationRow, defineCollaboration } from './collaboration';
 import { CompanionRow, defineCompanion } from './companion';
+import { CompanionObservationRow, defineCompanionObservation } from './companion-observation';
+import { CompanionVerdictRow, defineCompanionVerdict } from './companion-verdict';
 import { CompletenessMapRow, defineCompletenessMap } from './completeness-map';
 import { ContrastCurveRow, defineContrastCurve } from './contrast-curve';
 import { CoolingTableRow, defineCoolingTable } from './cooling-table';
@@ -30,7 +32,9 @@ export {
   AnalysisRow,
   AuditEntryRow,
   CollaborationRow,
+  CompanionObservationRow,
   CompanionRow,
+  CompanionVerdictRow,
   CompletenessMapRow,
   ContrastCurveRow,
   CoolingTableRow,
@@ -65,6 +69,8 @@ function associate(): void {
   TargetRow.hasMany(ContrastCurveRow, { as: 'curves', foreignKey: 'targetId' });
   TargetRow.hasMany(CompanionRow, { as: 'companions', foreignKey: 'targetId' });
   CompanionRow.belongsTo(TargetRow, { as: 'target', foreignKey: 'targetId' });
+  CompanionRow.hasMany(CompanionObservationRow, { as: 'observations', foreignKey: 'companionId' });
+  CompanionRow.hasMany(CompanionVerdictRow, { as: 'verdicts', foreignKey: 'companionId' });
   TargetRow.belongsTo(CompletenessMapRow, { as: 'map', foreignKey: 'mapId' });
   AnalysisRow.hasMany(RunRow, { as: 'runs', foreignKey: 'analysisId' });
   AnalysisRow.belongsTo(AnalysisRow, { as: 'parent', foreignKey: 'parentId' });
@@ -93,6 +99,8 @@ function defineModels(sequelize: Sequelize): void {
   defineCoolingTable(sequelize);
   defineCompletenessMap(sequelize);
   defineCompanion(sequelize);
+  defineCompanionObservation(sequelize);
+  defineCompanionVerdict(sequelize);
   definePopulation(sequelize);
   defineAnalysis(sequelize);
   defineJob(sequelize);

@@ -93,7 +93,7 @@ export const permissions = {
   vet: row(
     'vet candidates',
     ['no', 'lead', 'no', 'no', 'yes'],
-    'Write a note with your proposal to the lead of the survey',
+    'Send your verdict as a proposal: the lead of the survey decides',
   ),
   'save-population': row(
     'save a population version',

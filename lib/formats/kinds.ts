@@ -156,8 +156,11 @@ export interface CompanionRecord {
   semiMajorAxisErrorUpperAu: number | null;
   projectedSeparationAu: number | null;
   separationArcsec: number | null;
+  separationErrorArcsec: number | null;
   positionAngleDeg: number | null;
+  positionAngleErrorDeg: number | null;
   contrastMag: number | null;
+  contrastErrorMag: number | null;
   band: string | null;
   epoch: string | null;
   eccentricity: number | null;

@@ -16,6 +16,7 @@ import {
 } from './analyses';
 import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
+import { candidateRoutes } from './candidate-routes';
 import { idSchema, pageSchema, roleSchema } from './common';
 import { jobSchema } from './jobs';
 import { overviewSchema } from './overview';
@@ -321,4 +322,11 @@ const itself = route('get', '/api/v1/openapi.json', 'open', 'This document', {
 });
 
 /** Every method of every address below /api/v1. */
-export const apiRoutes: readonly ApiRoute[] = [itself, ...people, ...surveys, ...sampleRoutes, ...analyses];
+export const apiRoutes: readonly ApiRoute[] = [
+  itself,
+  ...people,
+  ...surveys,
+  ...sampleRoutes,
+  ...analyses,
+  ...candidateRoutes,
+];

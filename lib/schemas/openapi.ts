@@ -9,6 +9,7 @@ import { collaborationSchema, sessionSchema } from './account';
 import { analysisRecipeSchema, analysisSchema } from './analyses';
 import { type ApiRoute, apiRoutes } from './api-routes';
 import { auditEntrySchema } from './audit';
+import { candidateDetailSchema, candidateSchema } from './candidates';
 import { jobSchema } from './jobs';
 import { invitationSchema, memberSchema, meSchema, tokenSchema } from './people';
 import {
@@ -36,6 +37,8 @@ const named: Record<string, ZodType> = {
   Analysis: analysisSchema,
   AnalysisRecipe: analysisRecipeSchema,
   AuditEntry: auditEntrySchema,
+  Candidate: candidateSchema,
+  CandidateDetail: candidateDetailSchema,
   Collaboration: collaborationSchema,
   Companion: companionSchema,
   ContrastCurve: curveSchema,

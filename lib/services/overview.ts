@@ -9,24 +9,11 @@ import type { SurveyView } from '@/lib/schemas/surveys';
 import { CollaborationRow, database, JobRow, MemberRow } from '@/models';
 import { listAnalyses } from './analyses';
 import { describeJobs } from './jobs';
+import { leadOf } from './lead-analysis';
 import { describeSteps, type HistoryRun } from './limit-history';
 import { listSurveys } from './surveys';
 
 const LOG_LENGTH = 12;
-
-/** The lead analysis: the one that an owner chose, until then the one with the newest result. */
-function leadOf(analyses: AnalysisView[], settings: Record<string, unknown>) {
-  const chosen = analyses.find(({ id }) => id === settings.leadAnalysisId);
-  if (chosen) return chosen;
-  const finishedAt = ({ runs }: AnalysisView) =>
-    runs.reduce((newest, run) => (run.limit === null ? newest : max(newest, run.finishedAt)), '');
-  const [newest] = analyses
-    .filter((analysis) => finishedAt(analysis) !== '')
-    .sort((a, b) => (finishedAt(a) < finishedAt(b) ? 1 : -1));
-  return newest ?? null;
-}
-
-const max = (a: string, b: string | null) => (b !== null && b > a ? b : a);
 
 /** Finished runs of an analysis, oldest first, with what their labels are made from. */
 function readHistory(analysisId: string): Promise<HistoryRun[]> {
@@ -122,7 +109,7 @@ async function undecidedCandidates(actor: Actor, lead: AnalysisView | null): Pro
         : `${names.length} undecided candidates inside the ranges`,
     detail: `${survey}: ${names.join(', ')}`,
     verb: 'Look',
-    address: `/${actor.collaboration}/surveys/${slug}`,
+    address: `/${actor.collaboration}/candidates?survey=${slug}`,
   }));
 }
 
@@ -157,6 +144,7 @@ const EVERYBODYS_NEWS = [
   'copy-analysis',
   'run-analysis',
   'remove-analysis',
+  'vet',
 ];
 
 /** Where a collaboration stands, and what waits for a person. */

@@ -1,6 +1,7 @@
-import { type CompanionRecord, foldName } from '@/lib/formats';
-import { CompanionRow, ContrastCurveRow, TargetRow } from '@/models';
+import { type CompanionRecord, foldName, type Note } from '@/lib/formats';
+import { CompanionRow, CompanionVerdictRow, ContrastCurveRow, TargetRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
+import { keepFromFile } from '../candidates/from-file';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 import { TargetNames } from './target-names';
 
@@ -25,6 +26,14 @@ const fieldsOf = (record: CompanionRecord) => ({
     epoch: record.epoch,
     eccentricity: record.eccentricity,
     commonProperMotion: record.commonProperMotion,
+    // Files that state no errors must compare equal with rows of before there were such columns.
+    ...(record.separationErrorArcsec !== null && {
+      separationErrorArcsec: record.separationErrorArcsec,
+    }),
+    ...(record.positionAngleErrorDeg !== null && {
+      positionAngleErrorDeg: record.positionAngleErrorDeg,
+    }),
+    ...(record.contrastErrorMag !== null && { contrastErrorMag: record.contrastErrorMag }),
   },
 });
 type Fields = ReturnType<typeof fieldsOf>;
@@ -34,12 +43,34 @@ const isUnchanged = (row: CompanionRow, fields: Fields) =>
     (key) => canonicalJson(row[key] ?? null) === canonicalJson(fields[key] ?? null),
   );
 
+/** Says so where a file states something else than a person decided: nothing is overruled unseen. */
+async function noteOverruled(
+  steps: { record: CompanionRecord; target: TargetRow; row: CompanionRow | undefined }[],
+): Promise<Note[]> {
+  const changed = steps.filter(({ row, record }) => row && row.status !== record.status);
+  const decided = await CompanionVerdictRow.findAll({
+    attributes: ['companionId'],
+    where: {
+      companionId: changed.map(({ row }) => row?.id ?? ''),
+      uploadId: null,
+      isProposal: false,
+    },
+  });
+  const ids = new Set(decided.map(({ companionId }) => companionId));
+  return changed.flatMap(({ row, record, target }) => {
+    if (!row || !ids.has(row.id)) return [];
+    const message = `${target.name} ${record.companion}: ${row.status} by a verdict, ${record.status} by this file; the history keeps both`;
+    return [{ code: 'verdict-overruled', level: 'warning' as const, line: record.line, message }];
+  });
+}
+
 /** One row a companion; a later file replaces what an earlier one said of it. */
 export async function planCompanions(
   context: PlanContext,
   records: CompanionRecord[],
 ): Promise<Plan> {
   const { survey } = context;
+  const { personId } = context.actor;
   const targets = await TargetRow.findAll({ where: { surveyId: survey.id } });
   const names = new TargetNames(targets);
   const rows = await CompanionRow.findAll({
@@ -70,7 +101,7 @@ export async function planCompanions(
   return {
     items,
     faults: [],
-    notes: [],
+    notes: await noteOverruled(steps),
     summary:
       records.length === 0
         ? 'No companions: a table without rows states zero detections'
@@ -79,13 +110,13 @@ export async function planCompanions(
     apply: async (transaction, uploadId) => {
       for (const { record, target, row } of steps) {
         const fields = { ...fieldsOf(record), uploadId };
-        if (row) await row.update(fields, { transaction });
-        else {
-          await CompanionRow.create(
-            { ...fields, collaborationId: survey.collaborationId, targetId: target.id },
-            { transaction },
-          );
-        }
+        const kept = row
+          ? await row.update(fields, { transaction })
+          : await CompanionRow.create(
+              { ...fields, collaborationId: survey.collaborationId, targetId: target.id },
+              { transaction },
+            );
+        await keepFromFile(kept, record, { uploadId, personId }, transaction);
       }
       if (!needsMaps) return;
       const curves = await ContrastCurveRow.findAll({

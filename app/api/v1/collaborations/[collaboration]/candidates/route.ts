@@ -1,0 +1,8 @@
+import { collaborationRoute } from '@/app/api/v1/handler';
+import { candidateQuerySchema } from '@/lib/schemas/candidates';
+import { listCandidates } from '@/lib/services/candidates/list';
+
+export const GET = collaborationRoute(
+  { scope: 'read', query: candidateQuerySchema },
+  ({ actor, query }) => listCandidates(actor, query),
+);
