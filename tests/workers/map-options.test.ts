@@ -6,8 +6,8 @@ import { POST as sendUpload } from '@/app/api/v1/collaborations/[collaboration]/
 import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
 import { closeReaders } from '@/lib/services/reading';
 import { CompletenessMapRow, JobRow, type SurveyRow, TargetRow } from '@/models';
+import { loadRecipe } from '@/models/map-recipe';
 import { unpackMap } from '@/models/map-values';
-import { loadRecipe } from '@/workers/tasks/map-recipe';
 import { describeDetection } from '@/workers/tasks/run-words';
 import { withDatabase } from '../support/database';
 import { bearer, call, createCollaborationWith, tokenOf, webAddress } from '../support/people';

@@ -1,12 +1,12 @@
 import { complete, hold, reportProgress } from '@/lib/queue/attempt';
 import { type JobPayload, jobKinds } from '@/lib/queue/kinds';
 import { inTransaction } from '@/models';
+import { type MapPlan, planMaps, type WantedMap } from '@/models/map-plan';
+import type { MapRecipe } from '@/models/map-recipe';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import { Stopped, type Work } from '../perform';
 import { ThreadFault } from '../pool';
-import { type MapPlan, planMaps, type WantedMap } from './map-plan';
-import type { MapRecipe } from './map-recipe';
 import { linkMaps, markFailed, markWaiting, storeMaps } from './map-store';
 
 /** Few enough that progress is seen and a cancel is quick, enough that threads are not idle. */

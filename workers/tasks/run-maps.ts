@@ -11,13 +11,13 @@ import {
 import { CompletenessMapRow, inTransaction } from '@/models';
 import { digestOf } from '@/models/digest';
 import { mapOfRow } from '@/models/map-on-grid';
+import { mapInputs } from '@/models/map-recipe';
+import { buildStarInputs } from '@/models/star-inputs';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import type { Work } from '../perform';
-import { mapInputs } from './map-recipe';
 import { type MapToStore, storeMaps } from './map-store';
 import type { Entry, Sample, SampleStar } from './run-sample';
-import { buildStarInputs } from './star-inputs';
 
 export type Rule = 'same-position' | 'deepest' | 'independent';
 

@@ -4,10 +4,10 @@ import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
+import { loadRecipe, type MapRecipe } from '@/models/map-recipe';
 import { findLeftOut } from '@/models/sample-selection';
-import { loadRecipe, type MapRecipe } from './map-recipe';
+import { openCandidates } from '@/models/star-facts';
 import { loadSelection, type Selection } from './run-selection';
-import { openCandidates } from './star-facts';
 
 /** A survey of the run with the recipe of its maps. */
 export interface SampleSurvey {

@@ -1,10 +1,10 @@
 import { hold } from '@/lib/queue/attempt';
 import type { MapGrid, StarInputs } from '@/lib/sensitivity';
 import { CompletenessMapRow, inTransaction } from '@/models';
+import type { MapRecipe } from '@/models/map-recipe';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import { ThreadFault } from '../pool';
-import type { MapRecipe } from './map-recipe';
 import { type MapToStore, storeMaps } from './map-store';
 import { combineRows, type Rule } from './run-maps';
 import type { StudyWork } from './study-context';

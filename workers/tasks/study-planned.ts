@@ -3,7 +3,7 @@ import type { PlannedSurvey } from '@/lib/schemas/study-settings';
 import { ENGINE_VERSION, type StarInputs } from '@/lib/sensitivity';
 import { SurveyRow } from '@/models';
 import { digestOf } from '@/models/digest';
-import { loadRecipe } from './map-recipe';
+import { loadRecipe } from '@/models/map-recipe';
 import { readMaps } from './stored-maps';
 import type { StudyWork } from './study-context';
 import { ensureMaps, type NewMap } from './study-maps';

@@ -2,10 +2,10 @@ import { Transaction } from 'sequelize';
 import { InputError } from '@/lib/errors';
 import { listFirst } from '@/lib/queue/preconditions';
 import { database } from '@/models';
-import { mapDigest, mapInputs } from './map-recipe';
+import { mapDigest, mapInputs } from '@/models/map-recipe';
+import { buildStarInputs } from '@/models/star-inputs';
 import { combineMaps, ownCurves } from './run-maps';
 import { collectSample, type Sample, type SampleStar } from './run-sample';
-import { buildStarInputs } from './star-inputs';
 import type { StudyWork } from './study-context';
 
 /** Stars whose stored map is not what their entries would give now. */

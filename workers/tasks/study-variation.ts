@@ -1,10 +1,10 @@
 import type { MapSettings } from '@/lib/schemas/sensitivity';
 import { ENGINE_VERSION, type StarInputs } from '@/lib/sensitivity';
 import { digestOf } from '@/models/digest';
-import { loadRecipe, type MapRecipe, mapInputs } from './map-recipe';
+import { loadRecipe, type MapRecipe, mapInputs } from '@/models/map-recipe';
+import { buildStarInputs, type OwnCurve } from '@/models/star-inputs';
 import { jointInputs, ownCurves, ruleFor } from './run-maps';
 import type { Entry, Sample, SampleStar } from './run-sample';
-import { buildStarInputs, type OwnCurve } from './star-inputs';
 import type { StudyWork } from './study-context';
 import { ensureCombinations, ensureMaps, type NewCombination, type NewMap } from './study-maps';
 

@@ -9,8 +9,8 @@ import {
   type SensitivitySettings,
   type StarInputs,
 } from '@/lib/sensitivity';
-import { CoolingTableRow } from '@/models';
-import { digestOf } from '@/models/digest';
+import { digestOf } from './digest';
+import { CoolingTableRow } from './index';
 import { requireFacts } from './star-facts';
 import type { OwnCurve } from './star-inputs';
 

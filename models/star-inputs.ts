@@ -1,5 +1,5 @@
 import type { AgeLaw, DistanceLaw, StarInputs } from '@/lib/sensitivity';
-import type { TargetRow } from '@/models';
+import type { TargetRow } from './index';
 import { MissingInput } from './missing-input';
 import { candidatesOf, membershipOf, type OwnCurve, stellarCompanionOf } from './star-facts';
 

@@ -1,5 +1,5 @@
 import type { SensitivitySettings, StellarCompanion, UnvettedCandidate } from '@/lib/sensitivity';
-import { CompanionRow, type ContrastCurveRow, type TargetRow } from '@/models';
+import { CompanionRow, type ContrastCurveRow, type TargetRow } from './index';
 import { MissingInput } from './missing-input';
 
 /** A target's curve with the entry whose magnitudes go with it. */

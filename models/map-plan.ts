@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize';
 import { Op } from 'sequelize';
 import type { StarInputs } from '@/lib/sensitivity';
-import { CompletenessMapRow, ContrastCurveRow, SurveyRow, TargetRow } from '@/models';
+import { CompletenessMapRow, ContrastCurveRow, SurveyRow, TargetRow } from './index';
 import { loadRecipe, type MapRecipe, mapDigest, mapInputs } from './map-recipe';
 import { openCandidates } from './star-facts';
 import { buildStarInputs, MissingInput } from './star-inputs';
