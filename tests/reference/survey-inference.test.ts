@@ -12,55 +12,16 @@ import {
   upperLimit,
   viewPopulation,
 } from '@/lib/inference';
-import { computeCompletenessMap } from '@/lib/sensitivity';
 import { type DetectionInputs, measuredDetection } from './support/check-detection';
 import { differences, readChecks, runCheckFile } from './support/check-file';
-import {
-  type CurveInputs,
-  contrastCurve,
-  type LawInputs,
-  type StarCheckInputs,
-  sensitivitySettings,
-  starInputs,
-} from './support/check-inputs';
 import { checkedPopulation, type PopulationInputs } from './support/check-populations';
-import { publishedMaps, publishedSum, surveyGrid, surveyStars } from './support/check-survey';
-
-interface Survey {
-  masses_mjup: number[];
-  axes_au: number[];
-  stars: (StarCheckInputs & { curve: string; offset_mag?: number })[];
-  curves: Record<string, CurveInputs>;
-  options: Record<
-    string,
-    {
-      rule: 'hard' | 'smooth';
-      n_sigma: number;
-      age_nodes_per_half: number;
-      eccentricity: LawInputs;
-    }
-  >;
-}
-
-const survey = readChecks('survey-maps')[0].inputs as unknown as Survey;
-
-/** The maps of one option by our own engine, from curves, ages and distances. */
-function computedMaps(optionName: string): Float64Array {
-  const option = survey.options[optionName];
-  const maps = survey.stars.map((star) => {
-    const { curve: curveName, offset_mag: offset = 0, band } = star;
-    const curve = contrastCurve(survey.curves[curveName], band, option.n_sigma, offset);
-    const inputs = starInputs(star, [curve], option.age_nodes_per_half === 0);
-    const settings = sensitivitySettings(
-      option.eccentricity,
-      option.rule,
-      option.age_nodes_per_half,
-    );
-    return computeCompletenessMap(inputs, { kind: 'built-in' }, surveyGrid, settings).map
-      .completeness;
-  });
-  return Float64Array.from(maps.flatMap((map) => Array.from(map)));
-}
+import {
+  computedMaps,
+  publishedMaps,
+  publishedSum,
+  surveyGrid,
+  surveyStars,
+} from './support/check-survey';
 
 function meanCompleteness(maps: Float64Array, population: PopulationInputs) {
   const view = viewPopulation(maps, surveyGrid, checkedPopulation(population));
