@@ -96,7 +96,7 @@ export function CoverageChart(props: CoverageChartProps) {
       </text>
       <Names right={upper.right} />
       <LeftAxis
-        ticks={withUnit(percentTicks(low, high, upperHeight, 44), '\u2009%')}
+        ticks={withUnit(percentTicks(low, high, upperHeight, 36), '\u2009%')}
         scale={(percentage) => y(percentage / 100)}
         x={upper.left}
         y0={upper.bottom}
@@ -117,7 +117,7 @@ export function CoverageChart(props: CoverageChartProps) {
         observed less expected, points
       </text>
       <LeftAxis
-        ticks={percentTicks(-widest, widest, lowerHeight, 36)}
+        ticks={percentTicks(-widest, widest, lowerHeight, 24)}
         scale={(percentage) => d(percentage / 100)}
         x={lower.left}
         y0={lower.bottom}

@@ -48,11 +48,13 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
     bottom: height - margin.bottom,
   };
   const needed = neededInside(props);
-  const ends = [stars[0], Math.max(stars[stars.length - 1], needed ?? 1, 2 * stars[0])];
+  const ends = [stars[0], 1.1 * Math.max(stars[stars.length - 1], needed ?? 1, 2 * stars[0])];
   const limits = [wanted, ...limitIfNone, ...low, ...high];
   const [least, most] = [Math.min(...limits) * 0.85, Math.max(...limits) * 1.15];
   const x = scaleLog(ends, [frame.left, frame.right]);
   const y = scaleLog([least, most], [frame.bottom, frame.top]);
+  const hangsLeft =
+    needed !== undefined && x(needed) + textWidth(`${needed} stars`, 13) + 12 > frame.right;
   const words = `wanted ${formatLimit(wanted, quantity)}`;
   const say = ({ column }: ReadPlace) => [
     `${formatLimit(limitIfNone[column], quantity)} (${levelLabel}) if nothing is found`,
@@ -110,8 +112,9 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
           <circle className="step-dot" cx={x(needed)} cy={y(wanted)} r="4.5" />
           <text
             className="bold page-halo"
-            x={Math.min(x(needed) + 8, frame.right - textWidth(`${needed} stars`, 13))}
-            y={frame.bottom - 8}
+            x={hangsLeft ? x(needed) - 9 : x(needed) + 9}
+            y={y(wanted) - 9}
+            textAnchor={hangsLeft ? 'end' : 'start'}
           >
             {needed} {needed === 1 ? 'star' : 'stars'}
           </text>

@@ -5,12 +5,14 @@ import { useMemo, useState } from 'react';
 import {
   formatLimit,
   formatPercent,
+  formatRate,
   formatSignificant,
   type RateQuantity,
   rateUnit,
 } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { type InfluencePanel, influencePanels, nameHeights } from './influence-panels';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
 import { PointReadout } from './point-readout';
@@ -41,6 +43,8 @@ export interface StarInfluenceChartProps {
   levelLabel: string;
 }
 
+/** One star moves a limit little: two digits would all read the same. */
+const DIGITS = 4;
 const margin: Box = { left: 52, right: 14, top: 30, bottom: 48 };
 
 /** A dot a star: how much of the sensitivity it brings, and the limit that would be left without it. */
@@ -48,7 +52,7 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
   const { limit, quantity, levelLabel, halfCarriedBy } = props;
   const [measure, width] = useWidth<HTMLDivElement>(900);
   const [at, setAt] = useState<number>();
-  const height = width < 520 ? 340 : 400;
+  const height = width < 520 ? 380 : 440;
   const frame: Box = {
     left: margin.left,
     right: width - margin.right,
@@ -61,9 +65,16 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
   );
   const most = Math.max(0.05, ...stars.map(({ probability }) => probability));
   const x = scaleLinear([0, most * 1.03], [frame.left, frame.right]);
-  const y = scaleLinear(spanOf(stars, limit), [frame.bottom, frame.top]);
-  const [low, high] = y.domain();
-  const points = stars.map((star) => ({ x: x(star.probability), y: y(star.limitWithout) }));
+  const { main, far, isFar } = influencePanels(stars, limit, frame);
+  const panelOf = (star: InfluenceStar) => (far && isFar(star) ? far : main);
+  const points = stars.map((star) => ({
+    x: x(star.probability),
+    y: panelOf(star).y(star.limitWithout),
+  }));
+  const hosting = stars.flatMap(({ hosts }, index) =>
+    hosts.length === 0 ? [] : [{ ...points[index], words: `hosts ${hosts.join(', ')}` }],
+  );
+  const heights = nameHeights(hosting);
   const half = stars[stars.length - halfCarriedBy]?.probability;
   const chosen = at === undefined ? undefined : points[at];
   const say = (index: number) => {
@@ -72,7 +83,7 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
       star.name,
       ...(star.hosts.length > 0 ? [`hosts ${star.hosts.join(', ')}`] : []),
       `detection probability ${formatPercent(star.probability)}`,
-      `without it ${formatLimit(star.limitWithout, quantity)} (${levelLabel}), ${formatSignificant(star.ratio, 3)} times`,
+      `without it <${formatRate(star.limitWithout, quantity, DIGITS)} (${levelLabel}), ${formatSignificant(star.ratio, 4)} times`,
     ];
   };
 
@@ -94,25 +105,20 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
         />
       }
     >
-      <LeftAxis
-        ticks={withUnit(
-          linearTicks(100 * low, 100 * high, frame.bottom - frame.top, 46).filter(
-            ({ isMajor }) => isMajor,
-          ),
-          quantity === 'host_fraction' ? '\u2009%' : '',
-        )}
-        scale={(percentage) => y(percentage / 100)}
-        x={frame.left}
-        y0={frame.bottom}
-        y1={frame.top}
-        gridTo={frame.right}
-        hasLine={false}
-      />
+      {[main, ...(far ? [far] : [])].map((panel) => (
+        <LimitAxis key={panel.top} panel={panel} frame={frame} quantity={quantity} />
+      ))}
       <text className="quiet" x={0} y={14}>
         upper limit ({levelLabel}) without the star, {rateUnit(quantity)}
       </text>
       {half !== undefined && <HalfLine x={x(half) - 5} stars={halfCarriedBy} frame={frame} />}
-      <line className="trace-line" x1={frame.left} x2={frame.right} y1={y(limit)} y2={y(limit)} />
+      <line
+        className="trace-line"
+        x1={frame.left}
+        x2={frame.right}
+        y1={main.y(limit)}
+        y2={main.y(limit)}
+      />
       {stars.map((star, index) => (
         <circle
           key={star.name}
@@ -125,12 +131,15 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
           }}
         />
       ))}
-      {stars.map((star, index) =>
-        star.hosts.length === 0 ? null : (
-          <Host key={star.name} {...points[index]} name={star.hosts.join(', ')} frame={frame} />
-        ),
+      {far && (
+        <text className="quiet page-halo" x={frame.left + 6} y={far.top - 6}>
+          hosts of detections, on a scale of their own
+        </text>
       )}
-      <text className="bound-text page-halo" x={frame.left + 6} y={y(limit) - 7}>
+      {hosting.map((host, index) => (
+        <Host key={host.words} {...host} nameY={heights[index]} frame={frame} />
+      ))}
+      <text className="bound-text page-halo" x={frame.left + 6} y={main.y(limit) + 17}>
         all stars: {formatLimit(limit, quantity)}
       </text>
       {chosen && <circle data-screen-only="" className="ring" cx={chosen.x} cy={chosen.y} r="7" />}
@@ -147,12 +156,33 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
   );
 }
 
-/** The limits that are drawn, and never less than a tenth of the limit around it. */
-function spanOf(stars: InfluenceStar[], limit: number): [number, number] {
-  const limits = [limit, ...stars.map(({ limitWithout }) => limitWithout)];
-  const [low, high] = [Math.min(...limits), Math.max(...limits)];
-  const pad = Math.max(0.14 * (high - low), 0.02 * limit);
-  return [Math.max(0, low - pad), high + pad];
+function LimitAxis({
+  panel,
+  frame,
+  quantity,
+}: {
+  panel: InfluencePanel;
+  frame: Box;
+  quantity: RateQuantity;
+}) {
+  const [low, high] = panel.span;
+  const spacing = panel.bottom - panel.top > 150 ? 46 : 30;
+  return (
+    <LeftAxis
+      ticks={withUnit(
+        linearTicks(100 * low, 100 * high, panel.bottom - panel.top, spacing).filter(
+          ({ isMajor }) => isMajor,
+        ),
+        quantity === 'host_fraction' ? '\u2009%' : '',
+      )}
+      scale={(percentage) => panel.y(percentage / 100)}
+      x={frame.left}
+      y0={panel.bottom}
+      y1={panel.top}
+      gridTo={frame.right}
+      hasLine={false}
+    />
+  );
 }
 
 function HalfLine({ x, stars, frame }: { x: number; stars: number; frame: Box }) {
@@ -172,8 +202,19 @@ function HalfLine({ x, stars, frame }: { x: number; stars: number; frame: Box })
   );
 }
 
-function Host({ x, y, name, frame }: { x: number; y: number; name: string; frame: Box }) {
-  const words = `hosts ${name}`;
+function Host({
+  x,
+  y,
+  words,
+  nameY,
+  frame,
+}: {
+  x: number;
+  y: number;
+  words: string;
+  nameY: number;
+  frame: Box;
+}) {
   const hangsLeft = x + 12 + textWidth(words, 13) > frame.right;
   return (
     <g>
@@ -181,7 +222,7 @@ function Host({ x, y, name, frame }: { x: number; y: number; name: string; frame
       <text
         className="page-halo"
         x={hangsLeft ? x - 11 : x + 11}
-        y={y + 4}
+        y={nameY}
         textAnchor={hangsLeft ? 'end' : 'start'}
       >
         {words}
@@ -212,8 +253,8 @@ function influenceTable({ stars, quantity, levelLabel }: StarInfluenceChartProps
     rows: stars.map((star) => [
       star.name,
       formatSignificant(100 * star.probability, 3),
-      formatLimit(star.limitWithout, quantity),
-      formatSignificant(star.ratio, 3),
+      `<${formatRate(star.limitWithout, quantity, DIGITS)}`,
+      formatSignificant(star.ratio, 4),
       star.hosts.join(', '),
     ]),
   };

@@ -115,7 +115,7 @@ export function YieldChart(props: YieldChartProps) {
 /** Inside every drawing of what is not observed yet, and so in its files too. */
 export function ForecastMark({ x, y }: { x: number; y: number }) {
   return (
-    <text className="bold page-halo" x={x} y={y} textAnchor="end" fontStyle="italic">
+    <text className="bold page-halo" x={x} y={y} textAnchor="end" style={{ fontStyle: 'italic' }}>
       forecast
     </text>
   );

@@ -44,7 +44,7 @@ export function CellGrid(props: CellGridProps) {
   );
   return (
     <div className="min-w-0">
-      <div className="max-h-[26rem] overflow-y-auto">
+      <div className="relative max-h-[26rem] overflow-auto">
         <Table caption={caption}>
           <TableHead>
             <tr>

@@ -5,7 +5,12 @@ import { YieldChart } from '@/components/charts/yield-chart';
 import { FactsStrip } from '@/components/ui/facts-strip';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { describeLevel } from '@/lib/inference';
-import { formatLimit, formatPercent, formatPlain } from '@/lib/quantities/display';
+import {
+  formatLimit,
+  formatPercent,
+  formatPlain,
+  formatSignificant,
+} from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
 import type { AnswerProps } from '../kind-entry';
 import { forecastRateInWords, neededInWords } from './forecast-words';
@@ -23,7 +28,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
         facts={[
           {
             name: 'detections expected',
-            value: formatPlain(result.yield.mean, 2),
+            value: formatSignificant(result.yield.mean, 2),
             note: few === many ? `most likely ${few}` : `68\u2009%: ${few} to ${many}`,
           },
           { name: 'chance of none', value: formatPercent(result.chanceOfNone) },

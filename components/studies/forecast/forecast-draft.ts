@@ -6,12 +6,12 @@ import { type Draft, readNumber } from '../use-settings-form';
 export const targetColumns = [
   { name: 'name', head: 'star', isNumber: false, isNeeded: true },
   { name: 'distancePc', head: 'distance, pc', isNumber: true, isNeeded: true },
-  { name: 'distanceErrorPc', head: 'its error, pc', isNumber: true, isNeeded: false },
+  { name: 'distanceErrorPc', head: 'distance error, pc', isNumber: true, isNeeded: false },
   { name: 'ageMyr', head: 'age, Myr', isNumber: true, isNeeded: true },
-  { name: 'ageLowerMyr', head: 'at least, Myr', isNumber: true, isNeeded: false },
-  { name: 'ageUpperMyr', head: 'at most, Myr', isNumber: true, isNeeded: false },
+  { name: 'ageLowerMyr', head: 'age at 16 %, Myr', isNumber: true, isNeeded: false },
+  { name: 'ageUpperMyr', head: 'age at 84 %, Myr', isNumber: true, isNeeded: false },
   { name: 'hostMag', head: 'magnitude of the star', isNumber: true, isNeeded: true },
-  { name: 'hostMassMsun', head: 'its mass, solar', isNumber: true, isNeeded: false },
+  { name: 'hostMassMsun', head: 'mass, solar masses', isNumber: true, isNeeded: false },
 ] as const;
 
 /** The points of the assumed curve. */

@@ -5,8 +5,8 @@ import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
 import {
-  formatLimit,
   formatPercent,
+  formatRate,
   formatSignificant,
   type RateQuantity,
 } from '@/lib/quantities/display';
@@ -21,6 +21,8 @@ interface GainTableProps {
 }
 
 const FIRST = 20;
+/** One star moves a limit little: two digits would all read the same. */
+const DIGITS = 4;
 
 /** Which stars next: those that would lower the limit most, each added alone. */
 export function GainTable({ gain, limitNow, quantity, levelLabel }: GainTableProps) {
@@ -29,15 +31,21 @@ export function GainTable({ gain, limitNow, quantity, levelLabel }: GainTablePro
   const unit = quantity === 'host_fraction' ? 'points' : 'per 100 stars';
   return (
     <>
-      <div className="max-h-[44rem] overflow-y-auto">
+      <div className={`max-w-5xl ${isWhole ? 'max-h-[44rem] overflow-y-auto' : ''}`}>
         <Table caption="Forecast: planned stars by how much each would lower the limit, nothing found">
           <TableHead>
             <tr>
               <HeadCell isNumeric>rank</HeadCell>
               <HeadCell>star</HeadCell>
-              <HeadCell isNumeric>detection probability</HeadCell>
-              <HeadCell isNumeric>limit with it added ({levelLabel})</HeadCell>
-              <HeadCell isNumeric>gain, {unit}</HeadCell>
+              <HeadCell isNumeric className="max-md:whitespace-normal">
+                detection probability
+              </HeadCell>
+              <HeadCell isNumeric className="max-md:whitespace-normal">
+                limit with it added ({levelLabel})
+              </HeadCell>
+              <HeadCell isNumeric className="max-md:whitespace-normal">
+                gain, {unit}
+              </HeadCell>
             </tr>
           </TableHead>
           <TableBody>
@@ -55,7 +63,10 @@ export function GainTable({ gain, limitNow, quantity, levelLabel }: GainTablePro
                   {formatPercent(probability)}
                 </Cell>
                 <Cell isNumeric className="text-bound">
-                  {formatLimit(limitWithItAlone, quantity).replace(' per 100 stars', '')}
+                  {`<${formatRate(limitWithItAlone, quantity, DIGITS)}`.replace(
+                    ' per 100 stars',
+                    '',
+                  )}
                 </Cell>
                 <Cell isNumeric>
                   {formatSignificant(100 * Math.max(0, limitNow - limitWithItAlone), 2)}

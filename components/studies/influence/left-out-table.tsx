@@ -29,10 +29,14 @@ export function LeftOutTable({ caption, head, rows, limit, ...words }: LeftOutTa
         <tr>
           <HeadCell>{head}</HeadCell>
           <HeadCell isNumeric>stars</HeadCell>
-          <HeadCell isNumeric>limit without ({levelLabel})</HeadCell>
+          <HeadCell isNumeric className="max-md:whitespace-normal">
+            limit without ({levelLabel})
+          </HeadCell>
           <HeadCell isNumeric>difference</HeadCell>
           <HeadCell isNumeric>ratio</HeadCell>
-          <HeadCell isNumeric>stars’ worth left</HeadCell>
+          <HeadCell isNumeric className="max-md:whitespace-normal">
+            stars’ worth left
+          </HeadCell>
         </tr>
       </TableHead>
       <TableBody>

@@ -30,8 +30,8 @@ export function SystematicsAnswer({ asked, result }: AnswerProps<'systematics'>)
         />
       )}
       <p className="mt-3 max-w-[72ch] text-note">
-        Each row is one assumption that could be wrong. They are not independent errors: never add
-        them in quadrature, and never quote their sum as an uncertainty of the limit.
+        A row is one assumption that could be wrong, not an error bar of the limit: rows are never
+        added in quadrature.
       </p>
       {faulty.length > 0 && (
         <ul className="mt-3 grid gap-1">

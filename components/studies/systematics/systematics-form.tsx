@@ -69,7 +69,7 @@ export function SystematicsForm(props: FormProps<'systematics'>) {
         />
       </div>
       {isChosen && (
-        <div className="order-last w-full columns-3 gap-x-10 max-xl:columns-2 max-md:columns-1">
+        <div className="md:order-last w-full columns-3 gap-x-10 max-xl:columns-2 max-md:columns-1">
           {error !== undefined && (
             <p className="text-bad text-note">
               Cooling tables could not be fetched: {sentenceOf(error)}

@@ -1,0 +1,75 @@
+import { scaleLinear } from 'd3';
+import type { Box } from './map-contours';
+import type { InfluenceStar } from './star-influence-chart';
+import { textWidth } from './text-width';
+
+/** A host that moves the limit so many times further than any other star has a panel of its own. */
+const FAR = 3;
+const farHeight = 92;
+const gap = 26;
+
+export interface InfluencePanel {
+  top: number;
+  bottom: number;
+  y(limit: number): number;
+  span: [number, number];
+}
+export interface InfluencePanels {
+  main: InfluencePanel;
+  far: InfluencePanel | null;
+  isFar(star: InfluenceStar): boolean;
+}
+
+/** Stars on one scale, and hosts of detections on another where they would flatten all the rest. */
+export function influencePanels(
+  stars: InfluenceStar[],
+  limit: number,
+  frame: Pick<Box, 'top' | 'bottom'>,
+): InfluencePanels {
+  const moved = ({ limitWithout }: InfluenceStar) => Math.abs(limitWithout - limit);
+  const others = stars.filter(({ hosts }) => hosts.length === 0);
+  const most = Math.max(0, ...others.map(moved));
+  const isFar = (star: InfluenceStar) =>
+    others.length > 0 && star.hosts.length > 0 && moved(star) > FAR * most;
+  const far = stars.filter(isFar);
+  const near = [limit, ...stars.filter((star) => !isFar(star)).map((star) => star.limitWithout)];
+  if (far.length === 0) return { main: panelOf(near, limit, frame), far: null, isFar };
+  const bottom = frame.bottom - farHeight - gap;
+  return {
+    main: panelOf(near, limit, { top: frame.top, bottom }),
+    far: panelOf(
+      far.map(({ limitWithout }) => limitWithout),
+      limit,
+      { top: bottom + gap, bottom: frame.bottom },
+    ),
+    isFar,
+  };
+}
+
+function panelOf(
+  limits: number[],
+  limit: number,
+  { top, bottom }: Pick<Box, 'top' | 'bottom'>,
+): InfluencePanel {
+  const [low, high] = [Math.min(...limits), Math.max(...limits)];
+  const pad = Math.max(0.2 * (high - low), 0.004 * limit);
+  const span: [number, number] = [Math.max(0, low - pad), high + pad];
+  return { top, bottom, span, y: scaleLinear(span, [bottom, top]) };
+}
+
+/** Heights of names beside points, moved up where one would lie on another. */
+export function nameHeights(points: { x: number; y: number; words: string }[]): number[] {
+  // Rings of the points themselves are in the way as well.
+  const placed = points.map(({ x, y }) => ({ left: x - 8, right: x + 8, y: y + 4 }));
+  return points.map(({ x, y, words }) => {
+    const [left, right] = [x + 9, x + textWidth(words, 13) + 24];
+    let at = y + 4;
+    while (
+      placed.some((one) => left < one.right && right > one.left && Math.abs(one.y - at) < 17)
+    ) {
+      at -= 18;
+    }
+    placed.push({ left, right, y: at });
+    return at;
+  });
+}
