@@ -181,6 +181,14 @@ async function seed(): Promise<void> {
         title: 'Harbour, high-entropy start',
       },
     );
+    await bringIn(
+      actorOf('marrand'),
+      'cooling-tables',
+      'cold-harbour.csv',
+      coolingFile(1.4),
+      undefined,
+      { title: 'Harbour, low-entropy start' },
+    );
     const stars = drawSky();
     const ids: Record<string, string> = {};
     for (const survey of demoSurveys)

@@ -4,6 +4,7 @@ import type { PopulationView } from '@/lib/schemas/populations';
 import { copyAnalysis, createAnalysis, updateAnalysis } from '@/lib/services/analyses';
 import { createPopulation } from '@/lib/services/populations';
 import { startRun } from '@/lib/services/runs';
+import { askFurther } from './questions';
 
 interface Ranges {
   mass: [number, number];
@@ -66,6 +67,27 @@ export async function askQuestions({
     true,
   );
 
+  const broken = await createPopulation(statistician, {
+    name: 'Few beyond 60 AU',
+    note: 'Invented for the demonstration.',
+    convention: 'linear',
+    isShared: false,
+    definition: {
+      form: 'shaped',
+      massMinMjup: 2,
+      massMaxMjup: 30,
+      semiMajorAxisMinAu: 20,
+      semiMajorAxisMaxAu: 300,
+      mass: { shape: 'power-law', index: -1.3 },
+      semiMajorAxis: {
+        shape: 'broken-power-law',
+        breakAt: 60,
+        innerIndex: -0.4,
+        outerIndex: -2.2,
+      },
+    },
+  });
+
   const recipe = (population: PopulationView, ids: string[], prior: RatePriorInput = uniform) => ({
     surveyIds: ids,
     populationId: population.id,
@@ -79,6 +101,7 @@ export async function askQuestions({
   const run = async (actor: Actor, key: string) => {
     const started = await startRun(actor, key);
     await finish(started.job.id);
+    return started.id;
   };
 
   const sets = [
@@ -91,9 +114,10 @@ export async function askQuestions({
     name: 'Giant planets at 20–300 AU, four surveys',
     recipe: recipe(single, sets[0]),
   });
+  let leadRunId = '';
   for (const [step, ids] of sets.entries()) {
     if (step > 0) await updateAnalysis(statistician, lead.key, { recipe: recipe(single, ids) });
-    await run(statistician, lead.key);
+    leadRunId = await run(statistician, lead.key);
   }
   const zero = await copyAnalysis(student, lead.key, {
     name: 'The same with zero detections',
@@ -118,5 +142,6 @@ export async function askQuestions({
     const made = await createAnalysis(statistician, other);
     await run(statistician, made.key);
   }
+  await askFurther(statistician, leadRunId, [broken.id], finish);
   return { leadAnalysisId: lead.id };
 }
