@@ -44,16 +44,41 @@ export class LabError extends Error {
   }
 }
 
+/** What a refused file still tells: its columns, the lines around its faults, the rows at fault. */
+export interface RefusedFile {
+  columns: { index: number; heading: string; readAs: string | null; unit: string | null }[];
+  excerpts: { line: number; before: string | null; text: string; after: string | null }[];
+  offending: {
+    headings: string[];
+    rows: {
+      place: string;
+      cells: string[];
+      column: string | null;
+      code: string;
+      found: string;
+      expected: string;
+    }[];
+    count: number;
+  } | null;
+  /** The mapping of columns that was applied because an earlier file had these headings. */
+  remembered: { id: string; columnMap: Record<string, string> } | null;
+}
+
 /** Bad input: one or more faults, each with its place. `status` is 400 for a request, 422 for content. */
 export class InputError extends LabError {
   readonly faults: Fault[];
   /** How many faults there were in all; `faults` may list fewer. */
   readonly count: number;
-  constructor(faults: Fault | Fault[], options: { status?: number; count?: number } = {}) {
+  readonly refused: RefusedFile | undefined;
+  constructor(
+    faults: Fault | Fault[],
+    options: { status?: number; count?: number; refused?: RefusedFile } = {},
+  ) {
     const list = Array.isArray(faults) ? faults : [faults];
     super(list[0]?.code ?? 'input', options.status ?? 422, list.map(describeFault).join('\n'));
     this.faults = list;
     this.count = options.count ?? list.length;
+    this.refused = options.refused;
   }
 }
 

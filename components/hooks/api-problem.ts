@@ -1,4 +1,4 @@
-import { describeFault, type Fault } from '@/lib/errors';
+import { describeFault, type Fault, type RefusedFile } from '@/lib/errors';
 import { type Problem, problemSchema } from '@/lib/schemas/problem';
 
 /** A refused request as a screen shows it: sentences, and the places of all faults. */
@@ -10,6 +10,8 @@ export class ApiProblem extends Error {
   readonly faultCount: number;
   /** Roles of which one would have been enough. */
   readonly needed: readonly string[];
+  /** What a refused file still tells. */
+  readonly refused: RefusedFile | undefined;
 
   constructor(problem: Problem) {
     super(problem.detail || problem.title);
@@ -19,6 +21,7 @@ export class ApiProblem extends Error {
     this.faults = problem.errors ?? [];
     this.faultCount = problem.errorCount ?? this.faults.length;
     this.needed = problem.needed ?? [];
+    this.refused = problem.refused;
   }
 
   /** One line a fault, or the detail alone where no place is known. */

@@ -6,7 +6,7 @@ import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { sendUpload, storeUpload } from '@/components/hooks/use-uploads';
 import { FileCheck } from '@/components/surveys/file-check';
-import type { FileKind } from '@/components/surveys/file-kinds';
+import { type FileKind, tableContainers } from '@/components/surveys/file-kinds';
 import { FileNeeds } from '@/components/surveys/file-needs';
 import type { IncomingEntry } from '@/components/surveys/incoming-entry';
 import { FileDrop } from '@/components/ui/file-drop';
@@ -21,6 +21,8 @@ const kind: FileKind = {
   label: 'systems',
   needs: ['system', 'mass [Mjup]', 'semi_major_axis [AU]'],
   takes: ['weight'],
+  containers: tableContainers,
+  sample: 'systems.csv',
   note: 'One row a companion, with the name or number of its system. A row without mass and semi-major axis stands for a system that has none: such systems count. Without a column weight every system weighs the same.',
 };
 
@@ -95,7 +97,7 @@ export function SystemsUpload({ collaboration, version }: SystemsUploadProps) {
           )}
           <FileDrop
             label="Drop a file of systems here, or choose it"
-            hint="CSV, ECSV, FITS, VOTable or JSON; at most 20 000 systems and companions"
+            hint={`${kind.containers}; at most 20\u202f000 systems and companions`}
             isMultiple={false}
             onFiles={([file]) => file && take(file)}
           />

@@ -9,9 +9,11 @@ import { type StateKind, StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
-import { describeFault, type Fault } from '@/lib/errors';
 import type { UploadReport, UploadSettings } from '@/lib/schemas/uploads';
 import { AxisFields } from './axis-fields';
+import { FileColumns } from './file-columns';
+import { FileFaults } from './file-faults';
+import { FilePreview } from './file-preview';
 import type { IncomingEntry } from './incoming-entry';
 
 const SHOWN = 12;
@@ -35,100 +37,21 @@ const outcomeWords: Record<
   'left-out': { kind: 'stopped', words: 'left out' },
 };
 
-/** The item that a fault names, such as `target "RB 0001"`. */
-function targetOf(fault: Fault): string | null {
-  return /^target "(.+)"$/.exec(fault.item ?? '')?.[1] ?? null;
-}
+const containerNames: Record<string, string> = {
+  csv: 'CSV',
+  ecsv: 'ECSV',
+  votable: 'VOTable',
+  fits: 'FITS',
+  npy: 'NumPy array',
+  npz: 'NPZ archive',
+  hdf5: 'HDF5',
+  json: 'JSON',
+};
 
-function Faults({
-  faults,
-  count,
-  onLeaveOut,
-}: {
-  faults: Fault[];
-  count: number;
-  onLeaveOut(target: string): void;
-}) {
-  return (
-    <ul className="divide-y divide-rule">
-      {faults.map((fault) => {
-        const { file: _, ...place } = fault;
-        const target = targetOf(fault);
-        const sentence = describeFault(place);
-        return (
-          <li
-            key={`${fault.code}-${sentence}`}
-            className="flex flex-wrap items-baseline justify-between gap-x-4 bg-bad-soft py-1.5 pr-3.5 pl-[44px] text-[14px]"
-          >
-            <span className="min-w-0 break-words">{sentence}</span>
-            {target !== null && (
-              <TextAction onClick={() => onLeaveOut(target)}>Leave {target} out</TextAction>
-            )}
-          </li>
-        );
-      })}
-      {count > faults.length && (
-        <li className="py-1.5 pl-[44px] text-[14px] text-ink3">
-          {count} in all; the rest is alike or follows from these.
-        </li>
-      )}
-    </ul>
-  );
-}
-
-function Columns({
-  report,
-  settings,
-  onSettings,
-}: {
-  report: UploadReport;
-  settings: UploadSettings;
-  onSettings(next: UploadSettings): void;
-}) {
-  const ignored = report.columns.filter(
-    (column) => column.readAs === null && column.heading !== '',
-  );
-  return (
-    <div className="mb-4 grid grid-cols-2 gap-2 md:grid-cols-4 xl:grid-cols-6">
-      {report.columns
-        .filter((column) => column.readAs !== null)
-        .map((column) => (
-          <div key={column.index} className="min-w-0 bg-well px-3 py-2 text-[14px]">
-            <div className="truncate font-semibold" title={column.heading}>
-              {column.heading}
-            </div>
-            <div className="text-ink3">
-              read as {column.readAs}
-              {column.unit ? `, ${column.unit}` : ''}
-            </div>
-          </div>
-        ))}
-      {ignored.map((column) => (
-        <div
-          key={column.index}
-          className="min-w-0 border border-rule border-dashed px-3 py-2 text-[14px]"
-        >
-          <div className="truncate font-semibold" title={column.heading}>
-            {column.heading}
-          </div>
-          <TextField
-            label={`Read ${column.heading} as`}
-            isLabelHidden
-            placeholder="ignored; read as …"
-            defaultValue={settings.columnMap?.[column.heading] ?? ''}
-            onBlur={(event) => {
-              const readAs = event.target.value.trim();
-              if (readAs === (settings.columnMap?.[column.heading] ?? '')) return;
-              onSettings({
-                ...settings,
-                columnMap: { ...settings.columnMap, [column.heading]: readAs },
-              });
-            }}
-          />
-        </div>
-      ))}
-    </div>
-  );
+/** "read as FITS, HDU 2": the first bytes decide, not the name. */
+function describeContainer({ container, part }: UploadReport): string {
+  const name = containerNames[container] ?? container;
+  return `read as ${name}${part ? `, ${part}` : ''}`;
 }
 
 function Items({ report }: { report: UploadReport }) {
@@ -195,14 +118,18 @@ interface FileCheckProps {
   onSettings(settings: UploadSettings): void;
   onStore(): void;
   onDrop(): void;
+  /** Forgets a remembered mapping of columns and reads the file again. */
+  onForget?(id: string): void;
 }
 
 /** One file: what each column was read as, every fault with its place, and what would be stored. */
-export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps) {
+export function FileCheck({ entry, onSettings, onStore, onDrop, onForget }: FileCheckProps) {
   const headingId = useId();
   const { upload, problem, settings, kind } = entry;
   const state = states[entry.state];
   const report = upload?.report;
+  const columns = report?.columns ?? problem?.refused?.columns ?? [];
+  const remembered = report?.remembered ?? problem?.refused?.remembered ?? null;
   const canAct = entry.state === 'read' || entry.state === 'refused';
   const leaveOut = (target: string) =>
     onSettings({ ...settings, leaveOut: [...(settings.leaveOut ?? []), target] });
@@ -214,7 +141,11 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
           {entry.file.name}
         </h3>
         <StateMark kind={state.kind}>{state.words}</StateMark>
-        {report && <span className="text-[14px] text-ink3">{report.summary}</span>}
+        {report && (
+          <span className="text-[14px] text-ink3">
+            {report.summary}; {describeContainer(report)}
+          </span>
+        )}
         <span className="ml-auto flex gap-4">
           {entry.state === 'read' && <TextAction onClick={onStore}>Store this file</TextAction>}
           {canAct && <TextAction onClick={onDrop}>Drop this file</TextAction>}
@@ -238,7 +169,13 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
         />
       )}
       {problem && problem.faults.length > 0 && (
-        <Faults faults={problem.faults} count={problem.faultCount} onLeaveOut={leaveOut} />
+        <FileFaults
+          fileName={entry.file.name}
+          faults={problem.faults}
+          count={problem.faultCount}
+          refused={problem.refused}
+          onLeaveOut={leaveOut}
+        />
       )}
       {canAct && (
         <div className="my-3 flex flex-wrap items-end gap-4">
@@ -296,9 +233,19 @@ export function FileCheck({ entry, onSettings, onStore, onDrop }: FileCheckProps
           )}
         </div>
       )}
+      {columns.length > 0 && (
+        <FileColumns
+          columns={columns}
+          settings={settings}
+          isRemembered={remembered !== null}
+          canChange={canAct}
+          onSettings={onSettings}
+          onForget={() => onForget?.(remembered?.id ?? '')}
+        />
+      )}
       {report && (
         <>
-          <Columns report={report} settings={settings} onSettings={onSettings} />
+          {report.preview && <FilePreview preview={report.preview} rows={report.rows} />}
           {report.notes.length > 0 && (
             <ul className="mb-4 text-[14px]">
               {report.notes.map((note) => (

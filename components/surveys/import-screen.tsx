@@ -128,7 +128,7 @@ export function ImportScreen({
             )}
             <FileDrop
               label={`Drop files of ${chosen.label} here, or choose them`}
-              hint="CSV, at most 512 MiB each"
+              hint={`${chosen.containers}; each may be gzipped (.gz); at most 512 MiB each`}
               maxBytes={512 * 2 ** 20}
               onFiles={(files) => void take(files)}
             />
@@ -139,7 +139,16 @@ export function ImportScreen({
               </p>
             )}
           </div>
-          <FileNeeds kind={chosen} />
+          <div className="min-w-0">
+            <FileNeeds kind={chosen} />
+            <p className="mt-3 text-ink2 text-note">
+              A table of whole systems belongs to no survey: it{' '}
+              <Link href={`/${collaboration}/populations/new?from=systems`}>
+                becomes a population
+              </Link>
+              .
+            </p>
+          </div>
         </div>
       </section>
       {entries.length > 0 && (

@@ -22,9 +22,10 @@ import { refuseBrokenUtf8 } from './utf8';
 import { parseVotable } from './votable';
 
 /** A container opened: rows for the reader of a kind, or maps as arrays. */
-export type Opened =
-  | { container: Container; table: RawTable }
-  | { container: Container; cube: MapCube };
+export type Opened = { container: Container; part?: string } & (
+  | { table: RawTable }
+  | { cube: MapCube }
+);
 
 export interface OpenOptions {
   context: ReadContext;
@@ -34,6 +35,8 @@ export interface OpenOptions {
   isKnownHeading(heading: string): boolean;
   faults: FaultReport;
   notes: NoteReport;
+  /** Told as soon as it is known: the unpacked bytes of a text file, from which faults are quoted. */
+  onText?(bytes: Uint8Array): void;
 }
 
 const names: Record<Container, string> = {
@@ -115,6 +118,7 @@ function openPlain(bytes: Uint8Array, container: Container, options: OpenOptions
       faults.add(broken);
       return null;
     }
+    options.onText?.(bytes);
   }
   switch (container) {
     case 'csv':
@@ -148,7 +152,8 @@ function openFits(bytes: Uint8Array, options: OpenOptions): Opened | null {
     const isLongTable = tables.length === 1 && !hdus.some(({ kind }) => kind === 'image');
     if (!isLongTable) {
       const image = findMapImage(hdus, faults);
-      return image && asCube('fits', readFitsMaps(bytes, hdus, image, faults));
+      const maps = image && readFitsMaps(bytes, hdus, image, faults);
+      return image && inPart(image, asCube('fits', maps));
     }
   }
   const table = pickTable(tables, faults);
@@ -156,8 +161,11 @@ function openFits(bytes: Uint8Array, options: OpenOptions): Opened | null {
   if (hdus.length > 2) {
     notes.inform('hdu-chosen', `Read from HDU ${table.number}`, hduPlace(table));
   }
-  return asTable('fits', readFitsTable(bytes, table, maxRows, faults));
+  return inPart(table, asTable('fits', readFitsTable(bytes, table, maxRows, faults)));
 }
+
+const inPart = ({ number, name }: Hdu, opened: Opened | null): Opened | null =>
+  opened && { ...opened, part: `HDU ${number} ${name ?? ''}`.trim() };
 
 function pickTable(tables: Hdu[], faults: FaultReport): Hdu | null {
   if (tables.length === 1) return tables[0];

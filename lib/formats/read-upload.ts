@@ -1,4 +1,5 @@
 import { bindColumns, findSpec } from './columns';
+import { excerptsOf, linesOf } from './excerpts';
 import { foldHeading, splitHeading } from './headings';
 import { type KindReader, kindReaders, sampleReader } from './kind-readers';
 import type {
@@ -12,9 +13,12 @@ import type {
   UploadKind,
 } from './kinds';
 import { withoutLeftOut } from './leave-out';
+import { uploadLimits } from './limits';
 import { readMapCube } from './map-cube';
 import { isWideMap, WideMapReading } from './maps-wide';
+import { offendingRows } from './offending-rows';
 import { type Opened, type OpenOptions, openContainer, openText } from './open-container';
+import { type BoundTable, previewOf } from './preview';
 import { TableReading } from './reading';
 import { FaultReport, NoteReport } from './reports';
 import type { RawTable } from './table';
@@ -22,6 +26,7 @@ import type { RawTable } from './table';
 interface Rows<R> {
   records: R[];
   columns: ColumnReading[];
+  bound?: BoundTable;
 }
 
 function readRows<R>(
@@ -48,7 +53,11 @@ function readRows<R>(
     return { records: [], columns: readings };
   }
   const reading = new TableReading(table, columns, faults, notes);
-  return { records: reader.read(reading, context), columns: readings };
+  return {
+    records: reader.read(reading, context),
+    columns: readings,
+    bound: { table, columns },
+  };
 }
 
 /** Where the headings fit another kind, the wrong kind was probably chosen. */
@@ -80,12 +89,21 @@ function readMaps(
   return { records: wide.read(), columns: wide.readings };
 }
 
+/** What a refused reading has left for its faults to be shown with. */
+interface Remains {
+  text?: Uint8Array;
+  table?: RawTable;
+}
+
 function failure(
   context: ReadContext,
   columns: ColumnReading[],
   faults: FaultReport,
   notes: NoteReport,
+  { text, table }: Remains,
 ): ReadFailure {
+  const textsOf = (lines: ReadonlySet<number>) =>
+    text ? linesOf(text, lines, uploadLimits.cellCharacters) : new Map<number, string>();
   return {
     ok: false,
     kind: context.kind,
@@ -93,6 +111,8 @@ function failure(
     faultCount: faults.count,
     notes: notes.list(),
     columns,
+    excerpts: text ? excerptsOf(text, faults.list(context.fileName)) : [],
+    offending: table ? offendingRows(table, faults.kept, textsOf) : null,
   };
 }
 
@@ -100,8 +120,9 @@ function failure(
 function optionsFor(
   context: ReadContext,
   reader: Pick<KindReader<unknown>, 'maxRows' | 'what' | 'columns'>,
-): OpenOptions {
+): OpenOptions & { remains: Remains } {
   const { maxRows, what } = reader;
+  const remains: Remains = {};
   const columns = reader.columns(context);
   return {
     context,
@@ -112,20 +133,30 @@ function optionsFor(
       Object.hasOwn(context.columnMap ?? {}, heading),
     faults: new FaultReport(),
     notes: new NoteReport(),
+    remains,
+    onText: (bytes) => {
+      remains.text = bytes;
+    },
   };
 }
 
-function readOpened(opened: Opened | null, options: OpenOptions): ReadResult {
-  const { context, faults, notes } = options;
+function readOpened(
+  opened: Opened | null,
+  options: OpenOptions & { remains: Remains },
+): ReadResult {
+  const { context, faults, notes, remains } = options;
   const { kind } = context;
-  if (opened === null) return failure(context, [], faults, notes);
-  const { records, columns } = readRecords(opened, options);
-  if (faults.count > 0) return failure(context, columns, faults, notes);
+  if (opened === null) return failure(context, [], faults, notes, remains);
+  const { records, columns, bound } = readRecords(opened, options);
+  if ('table' in opened) remains.table = opened.table;
+  if (faults.count > 0) return failure(context, columns, faults, notes, remains);
   // The reader was taken by this very kind, which the types cannot follow.
   return {
     ok: true,
     kind,
     container: opened.container,
+    part: opened.part ?? null,
+    preview: previewOf(kind, records, bound ?? null),
     records,
     notes: notes.list(),
     columns,
@@ -175,11 +206,14 @@ export function readCompanionSamples(
 ): SamplesResult {
   const asCompanions: ReadContext = { ...context, kind: 'companions' };
   const options = optionsFor(asCompanions, sampleReader);
-  const { faults, notes } = options;
+  const { faults, notes, remains } = options;
   const opened = openText(bytes, options);
-  if (opened === null || !('table' in opened)) return failure(asCompanions, [], faults, notes);
+  if (opened === null || !('table' in opened)) {
+    return failure(asCompanions, [], faults, notes, remains);
+  }
   const { table } = opened;
+  remains.table = table;
   const { records, columns } = readRows(table, sampleReader, asCompanions, faults, notes);
-  if (faults.count > 0) return failure(asCompanions, columns, faults, notes);
+  if (faults.count > 0) return failure(asCompanions, columns, faults, notes, remains);
   return { ok: true, records, notes: notes.list(), columns, rowCount: table.rowCount };
 }

@@ -5,6 +5,8 @@ import type { Place } from './table';
 /** Entries of one code that are listed; the rest are counted. */
 const listedPerCode = 5;
 const quotedCharacters = 40;
+/** Faults that are kept for the rows at fault, beyond those that are listed. */
+const keptFaults = 10_000;
 
 const unseen = /[\p{Cc}\u061c\u200b\u200e\u200f\u2028-\u202e\u2066-\u2069\ufeff]/gu;
 
@@ -17,7 +19,12 @@ export function quoteFound(text: string): string {
   const characters = Array.from(text.slice(0, 4 * quotedCharacters));
   const isCut = characters.length > quotedCharacters || text.length > 4 * quotedCharacters;
   const shown = characters.slice(0, quotedCharacters).join('');
-  return `"${shown.replace(unseen, (character) => codePoint(character))}${isCut ? '…' : ''}"`;
+  return `"${showUnseen(shown)}${isCut ? '…' : ''}"`;
+}
+
+/** Controls and characters that turn the direction of a text, as U+xxxx. */
+export function showUnseen(text: string): string {
+  return text.replace(unseen, (character) => codePoint(character));
 }
 
 /** The place of a fault or note in words: `line 3, column "ra"`, or `file` for the whole of it. */
@@ -54,6 +61,14 @@ class Report<Entry extends { code: string }> {
 }
 
 export class FaultReport extends Report<Fault> {
+  /** In the order of the file, each of them. */
+  readonly kept: Fault[] = [];
+
+  override add(fault: Fault): void {
+    super.add(fault);
+    if (this.kept.length < keptFaults) this.kept.push(fault);
+  }
+
   list(fileName: string): Fault[] {
     return this.listWith((code, message) => ({ code, message })).map((fault) => ({
       ...fault,

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment } from './common';
-import { faultSchema } from './problem';
+import { faultSchema, readColumnSchema } from './problem';
 
 export const uploadKindSchema = z.enum([
   'targets',
@@ -54,18 +54,47 @@ export const noteSchema = z.object({
   message: z.string(),
 });
 
+export const previewSchema = z.object({
+  /** The first rows in our columns and units; null where the file is no table. */
+  table: z
+    .object({
+      columns: z.array(z.object({ name: z.string(), unit: z.string().nullable() })),
+      rows: z.array(z.array(z.union([z.string(), z.number(), z.null()]))),
+    })
+    .nullable(),
+  curves: z.array(
+    z.object({
+      target: z.string(),
+      band: z.string(),
+      epoch: z.string().nullable(),
+      nSigma: z.number(),
+      separationArcsec: z.array(z.number()),
+      contrastMag: z.array(z.number()),
+    }),
+  ),
+  /** Thinned to 40 × 40 nodes; values in the order [mass, semi-major axis]. */
+  maps: z.array(
+    z.object({
+      target: z.string(),
+      massMjup: z.array(z.number()),
+      semiMajorAxisAu: z.array(z.number()),
+      completeness: z.array(z.number()),
+    }),
+  ),
+});
+export type UploadPreview = z.infer<typeof previewSchema>;
+
 /** What the dry run says: the same code that stores has read every line. */
 export const uploadReportSchema = z.object({
   container: z.string(),
+  /** Which part of the container was read, such as `HDU 2`. */
+  part: z.string().nullable().optional(),
+  /** The beginning of the file as read; not kept once the file is stored, and left out of lists. */
+  preview: previewSchema.optional(),
+  /** A mapping of columns that came from an earlier file with these headings. */
+  remembered: z.object({ id: z.string() }).nullable().optional(),
   rows: z.number(),
-  columns: z.array(
-    z.object({
-      index: z.number(),
-      heading: z.string(),
-      readAs: z.string().nullable(),
-      unit: z.string().nullable(),
-    }),
-  ),
+  columns: z.array(readColumnSchema),
   notes: z.array(noteSchema),
   faults: z.array(faultSchema),
   faultCount: z.number(),

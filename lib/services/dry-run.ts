@@ -120,7 +120,9 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
       ({ code, line, item }) => code === 'too-large' && line === undefined && item === undefined,
     );
     const status = isTooLarge ? 413 : 422;
-    throw new InputError(faults, { status, count: read.faultCount });
+    const { columns, excerpts, offending } = read;
+    const refused = { columns, excerpts, offending, remembered: null };
+    throw new InputError(faults, { status, count: read.faultCount, refused });
   }
   const plan = await planOf(actor, source, read);
   if (plan.faults.length > 0) {
@@ -131,6 +133,8 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
   }
   const report: UploadReport = {
     container: read.container,
+    part: read.part,
+    preview: read.preview,
     rows: read.rowCount,
     columns: read.columns,
     notes: [...read.notes, ...plan.notes],

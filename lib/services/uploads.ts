@@ -39,6 +39,12 @@ async function describeUpload(row: UploadRow): Promise<UploadView> {
   };
 }
 
+/** Looked at before storing and not after. */
+function withoutPreview(upload: UploadView): UploadView {
+  const { preview: _, ...report } = upload.report;
+  return { ...upload, report };
+}
+
 function parseSettings(text: string | undefined): UploadSettings {
   if (text === undefined) return {};
   let given: unknown;
@@ -159,7 +165,7 @@ export async function listUploads(
     order: [['createdAt', 'DESC']],
     ...page,
   });
-  return Promise.all(rows.map(describeUpload));
+  return Promise.all(rows.map(async (row) => withoutPreview(await describeUpload(row))));
 }
 
 /** The original bytes, as they came. */
@@ -208,7 +214,7 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
         {
           state: 'stored',
           storedAt: new Date(),
-          report: report as unknown as Record<string, unknown>,
+          report: { ...report, preview: undefined } as unknown as Record<string, unknown>,
         },
         { where: { id: row.id, state: 'read' }, transaction },
       );

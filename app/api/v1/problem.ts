@@ -48,6 +48,7 @@ export function problemOf(error: unknown, requestId: string): Response {
   if (fault instanceof InputError) {
     problem.errors = fault.faults;
     problem.errorCount = fault.count;
+    problem.refused = fault.refused;
   }
   if (fault instanceof AccessError && fault.needed.length > 0) problem.needed = [...fault.needed];
   const headers = new Headers({ 'Content-Type': 'application/problem+json' });
