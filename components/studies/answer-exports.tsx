@@ -2,6 +2,7 @@
 
 import { type RefObject, useState } from 'react';
 import { drawingToSvg, svgToPng } from '@/components/charts/export-drawing';
+import { saveFile } from '@/components/charts/save-file';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { Menu, MenuAction } from '@/components/ui/menu';
 import { Notice } from '@/components/ui/notice';
@@ -110,15 +111,4 @@ function captionOf(
     asked.result.statement.conditions.map((condition) => `${condition}.`).join(' '),
     `SHA-256 ${study.resultDigest ?? ''}, seed ${study.seed}, engine ${study.engineVersion}`,
   ];
-}
-
-function saveFile(name: string, content: string | Blob, type: string): void {
-  const blob = typeof content === 'string' ? new Blob([content], { type }) : content;
-  const address = URL.createObjectURL(blob);
-  const link = document.createElement('a');
-  link.href = address;
-  link.download = name;
-  link.click();
-  // The browser reads the address after this turn.
-  setTimeout(() => URL.revokeObjectURL(address), 10_000);
 }

@@ -1,14 +1,9 @@
-import { type StateKind, StateMark } from '@/components/ui/state-mark';
+import Link from 'next/link';
+import { statusMarks, statusWords } from '@/components/candidates/status-words';
+import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { CompanionView } from '@/lib/schemas/surveys';
 import { formatErrorPart, formatMeasured } from './measured';
-
-const marks: Record<CompanionView['status'], StateKind> = {
-  confirmed: 'ok',
-  candidate: 'warn',
-  ambiguous: 'warn',
-  background: 'stopped',
-};
 
 function withErrors(value: number | null, lower: number | null, upper: number | null): string {
   if (value === null) return '–';
@@ -19,7 +14,13 @@ function withErrors(value: number | null, lower: number | null, upper: number | 
 }
 
 /** Companions and candidates; only confirmed ones can be detections. */
-export function CompanionTable({ companions }: { companions: CompanionView[] }) {
+export function CompanionTable({
+  collaboration,
+  companions,
+}: {
+  collaboration: string;
+  companions: CompanionView[];
+}) {
   if (companions.length === 0) {
     return (
       <p className="py-6 text-ink3">
@@ -46,10 +47,14 @@ export function CompanionTable({ companions }: { companions: CompanionView[] }) 
         {companions.map((companion) => (
           <Row key={companion.id}>
             <Cell isRowHead className="whitespace-nowrap">
-              {companion.target} {companion.name}
+              <Link href={`/${collaboration}/candidates/${companion.id}`}>
+                {companion.target} {companion.name}
+              </Link>
             </Cell>
             <Cell>
-              <StateMark kind={marks[companion.status]}>{companion.status}</StateMark>
+              <StateMark kind={statusMarks[companion.status]}>
+                {statusWords[companion.status]}
+              </StateMark>
             </Cell>
             <Cell isNumeric>
               {withErrors(

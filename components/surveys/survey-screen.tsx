@@ -4,6 +4,7 @@ import { useRouter } from 'next/navigation';
 import { useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
+import { SurveyMaps } from '@/components/maps/survey-maps';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
 import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
@@ -187,10 +188,24 @@ export function SurveyScreen(props: SurveyScreenProps) {
                   ),
                 },
                 {
+                  id: 'maps',
+                  label: 'Maps',
+                  count: survey.maps.ready,
+                  content: (
+                    <SurveyMaps
+                      collaboration={collaboration}
+                      slug={survey.slug}
+                      canRefresh={survey.can.import}
+                      stamp={`${survey.maps.ready}-${survey.mapJob?.status}`}
+                      onStarted={() => void mutate()}
+                    />
+                  ),
+                },
+                {
                   id: 'candidates',
                   label: 'Candidates',
                   count: companions.length,
-                  content: <CompanionTable companions={companions} />,
+                  content: <CompanionTable collaboration={collaboration} companions={companions} />,
                 },
                 {
                   id: 'checks',

@@ -6,7 +6,14 @@ export {
   parallaxFactors,
 } from './background-track';
 export { type HypothesisFit, type MotionHypothesis, testMotion } from './motion-test';
-export { type MeasuredOffset, type Offset, offsetOf, type PolarOffset, polarOf } from './offsets';
+export {
+  covarianceOf,
+  type MeasuredOffset,
+  type Offset,
+  offsetOf,
+  type PolarOffset,
+  polarOf,
+} from './offsets';
 export {
   LEAST_MAGNITUDE_ERROR,
   massFromPhotometry,

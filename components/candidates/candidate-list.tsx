@@ -1,0 +1,164 @@
+'use client';
+
+import Link from 'next/link';
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAddressQuery } from '@/components/hooks/use-address-query';
+import { CANDIDATES_SHOWN, useCandidates } from '@/components/hooks/use-candidates';
+import { EmptyState } from '@/components/ui/empty-state';
+import { Notice } from '@/components/ui/notice';
+import { SelectField } from '@/components/ui/select-field';
+import { StateMark } from '@/components/ui/state-mark';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { formatPlain } from '@/lib/quantities/display';
+import {
+  type CandidateList,
+  type CandidateView,
+  type CompanionStatus,
+  companionStatusSchema,
+} from '@/lib/schemas/candidates';
+import { statusMarks, statusWords } from './status-words';
+import { withErrors } from './verdict-history';
+
+interface CandidateListPanelProps {
+  collaboration: string;
+  initial: CandidateList;
+  surveys: { slug: string; name: string }[];
+  filter: { survey?: string; status?: CompanionStatus };
+}
+
+function rangesOf({ isInsideRanges }: CandidateView): string {
+  if (isInsideRanges === null) return '–';
+  return isInsideRanges ? 'inside' : 'outside';
+}
+
+function CandidateTable({
+  collaboration,
+  candidates,
+  lead,
+}: {
+  collaboration: string;
+  candidates: CandidateView[];
+  lead: string | null;
+}) {
+  return (
+    <Table caption="Candidates of all surveys, those that wait for a verdict first">
+      <TableHead>
+        <Row>
+          <HeadCell>candidate</HeadCell>
+          <HeadCell>survey</HeadCell>
+          <HeadCell>status</HeadCell>
+          <HeadCell isNumeric>epochs</HeadCell>
+          <HeadCell isNumeric>
+            mass, M<sub>J</sub>
+          </HeadCell>
+          <HeadCell isNumeric>semi-major axis, AU</HeadCell>
+          <HeadCell isNumeric>probability of being bound</HeadCell>
+          <HeadCell>{lead === null ? 'ranges' : `ranges of ${lead}`}</HeadCell>
+        </Row>
+      </TableHead>
+      <TableBody>
+        {candidates.map((one) => (
+          <Row key={one.id}>
+            <Cell isRowHead className="whitespace-nowrap">
+              <Link href={`/${collaboration}/candidates/${one.id}`}>
+                {one.star} {one.name}
+              </Link>
+            </Cell>
+            <Cell className="whitespace-nowrap">{one.survey.name}</Cell>
+            <Cell className="whitespace-nowrap">
+              <StateMark kind={statusMarks[one.status]}>
+                {statusWords[one.status]}
+                {one.proposals > 0 &&
+                  `, ${one.proposals === 1 ? '1 proposal' : `${one.proposals} proposals`}`}
+              </StateMark>
+            </Cell>
+            <Cell isNumeric>{one.observations === 0 ? '–' : one.observations}</Cell>
+            <Cell isNumeric>
+              {one.massMjup === null ? '–' : withErrors(one.massMjup, one.massErrorsMjup, '')}
+            </Cell>
+            <Cell isNumeric>
+              {one.semiMajorAxisAu === null
+                ? '–'
+                : withErrors(one.semiMajorAxisAu, one.semiMajorAxisErrorsAu, '')}
+            </Cell>
+            <Cell isNumeric>{one.probability === null ? '–' : formatPlain(one.probability)}</Cell>
+            <Cell>{rangesOf(one)}</Cell>
+          </Row>
+        ))}
+      </TableBody>
+    </Table>
+  );
+}
+
+/** Every candidate of the collaboration; what waits for a person comes first. */
+export function CandidateListPanel(props: CandidateListPanelProps) {
+  const { collaboration, initial, surveys } = props;
+  const [filter, setFilter] = useState(props.filter);
+  useAddressQuery({
+    ...(filter.survey !== undefined && { survey: filter.survey }),
+    ...(filter.status !== undefined && { status: filter.status }),
+  });
+  const isFirst = filter.survey === props.filter.survey && filter.status === props.filter.status;
+  const { data: list = initial, error } = useCandidates(
+    collaboration,
+    filter,
+    isFirst ? initial : undefined,
+  );
+  const total = Object.values(list.counts).reduce((sum, count) => sum + count, 0);
+  if (total === 0 && filter.survey === undefined) {
+    return (
+      <EmptyState title="No candidate yet">
+        Candidates come with a survey's file of companions: one row a source, with its status and,
+        where it was seen, epoch, separation and position angle.
+      </EmptyState>
+    );
+  }
+  return (
+    <>
+      <div className="mb-4 flex flex-wrap items-end gap-4">
+        <SelectField
+          label="Survey"
+          value={filter.survey ?? ''}
+          onChange={({ target }) =>
+            setFilter({ ...filter, survey: target.value === '' ? undefined : target.value })
+          }
+          options={[
+            { value: '', label: 'all surveys' },
+            ...surveys.map(({ slug, name }) => ({ value: slug, label: name })),
+          ]}
+        />
+        <SelectField
+          label="Status"
+          value={filter.status ?? ''}
+          onChange={({ target }) => {
+            const status = companionStatusSchema.safeParse(target.value);
+            setFilter({ ...filter, status: status.success ? status.data : undefined });
+          }}
+          options={[
+            { value: '', label: `all, ${total}` },
+            ...companionStatusSchema.options.map((status) => ({
+              value: status,
+              label: `${statusWords[status]}, ${list.counts[status]}`,
+            })),
+          ]}
+        />
+      </div>
+      {error !== undefined && <Notice tone="bad" title={sentenceOf(error)} isAnnounced />}
+      {list.candidates.length === 0 ? (
+        <p className="py-4 text-ink3">No candidate has this status here.</p>
+      ) : (
+        <CandidateTable
+          collaboration={collaboration}
+          candidates={list.candidates}
+          lead={list.lead}
+        />
+      )}
+      {list.total > list.candidates.length && (
+        <p className="mt-3 text-ink3 text-note">
+          The first {CANDIDATES_SHOWN} of {list.total}: choose a survey or a status.
+        </p>
+      )}
+    </>
+  );
+}

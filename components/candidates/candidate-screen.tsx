@@ -1,0 +1,154 @@
+'use client';
+
+import { useRef, useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { removeObservation, useCandidate } from '@/components/hooks/use-candidates';
+import { Button } from '@/components/ui/button';
+import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { StateMark } from '@/components/ui/state-mark';
+import { formatPlain } from '@/lib/quantities/display';
+import type { CandidateDetail } from '@/lib/schemas/candidates';
+import { EpochDialog } from './epoch-dialog';
+import { EpochTable } from './epoch-table';
+import { Estimates } from './estimates';
+import { MotionSection } from './motion-section';
+import { statusMarks, statusWords } from './status-words';
+import { TrackExports } from './track-exports';
+import { VerdictForm } from './verdict-form';
+import { VerdictHistory, withErrors } from './verdict-history';
+
+function rangesFact({ isInsideRanges }: CandidateDetail): string {
+  if (isInsideRanges === null) return 'not known';
+  return isInsideRanges ? 'inside' : 'outside';
+}
+
+function factsOf(candidate: CandidateDetail): Fact[] {
+  const { massMjup, massErrorsMjup, semiMajorAxisAu, semiMajorAxisErrorsAu } = candidate;
+  return [
+    {
+      name: 'mass',
+      value: massMjup === null ? '–' : withErrors(massMjup, massErrorsMjup, 'MJ'),
+    },
+    {
+      name: 'semi-major axis',
+      value:
+        semiMajorAxisAu === null ? '–' : withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, 'AU'),
+    },
+    {
+      name: 'probability of being bound',
+      value: candidate.probability === null ? '–' : formatPlain(candidate.probability),
+    },
+    { name: 'ranges of the lead analysis', value: rangesFact(candidate) },
+    { name: 'epochs', value: candidate.seen.length },
+  ];
+}
+
+/** One candidate: what was seen, what it says, and what people decided. */
+export function CandidateScreen({
+  collaboration,
+  initial,
+}: {
+  collaboration: string;
+  initial: CandidateDetail;
+}) {
+  const { data: candidate = initial, mutate } = useCandidate(collaboration, initial);
+  const [isAdding, setAdding] = useState(false);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const drawing = useRef<HTMLDivElement>(null);
+  const take = (next: CandidateDetail) => void mutate(next, { revalidate: false });
+  const remove = async (id: string) => {
+    setRefusal(null);
+    try {
+      await removeObservation(collaboration, candidate.id, id);
+      await mutate();
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+  };
+  const { survey, proposals } = candidate;
+  return (
+    <>
+      <PageTitle
+        title={`${candidate.star} ${candidate.name}`}
+        crumbs={[
+          { href: `/${collaboration}/candidates`, label: 'Candidates' },
+          { href: `/${collaboration}/surveys/${survey.slug}`, label: survey.name },
+          { label: candidate.star },
+        ]}
+        state={
+          <StateMark kind={statusMarks[candidate.status]}>
+            {statusWords[candidate.status]}
+          </StateMark>
+        }
+        actions={
+          candidate.can.vet && (
+            <Button icon="add" onClick={() => setAdding(true)}>
+              Add an epoch
+            </Button>
+          )
+        }
+      />
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {proposals > 0 && (
+        <div className="mb-3">
+          <Notice
+            tone="warn"
+            title={proposals === 1 ? '1 proposal waits.' : `${proposals} proposals wait.`}
+          >
+            The history below names them; a verdict answers them.
+          </Notice>
+        </div>
+      )}
+      <FactsStrip facts={factsOf(candidate)} />
+      <EpochDialog
+        collaboration={collaboration}
+        candidate={candidate}
+        isOpen={isAdding}
+        onClose={() => setAdding(false)}
+        onSaved={take}
+      />
+      <div className="mt-7 grid grid-cols-1 gap-x-14 gap-y-9 xl:grid-cols-[minmax(0,7fr)_minmax(0,4fr)]">
+        <div className="flex min-w-0 flex-col gap-9">
+          <section>
+            <SectionOpener
+              number={1}
+              title="Bound or behind"
+              tools={
+                candidate.seen.length > 0 && <TrackExports candidate={candidate} area={drawing} />
+              }
+            />
+            <div ref={drawing}>
+              <MotionSection candidate={candidate} />
+            </div>
+          </section>
+          <section>
+            <SectionOpener number={2} title="Epochs" context="errors of 1 σ" />
+            <EpochTable candidate={candidate} onRemove={(id) => void remove(id)} />
+          </section>
+        </div>
+        <div className="flex min-w-0 flex-col gap-9">
+          <section>
+            <SectionOpener number={3} title="Mass and axis" context="if it is bound" />
+            <Estimates candidate={candidate} />
+          </section>
+          <section>
+            <SectionOpener number={4} title="Verdict" />
+            <VerdictForm
+              key={candidate.history.length}
+              collaboration={collaboration}
+              candidate={candidate}
+              onGiven={take}
+            />
+          </section>
+          <section>
+            <SectionOpener number={5} title="History" context="UTC" />
+            <VerdictHistory history={candidate.history} />
+          </section>
+        </div>
+      </div>
+    </>
+  );
+}
