@@ -20,10 +20,11 @@ import {
 } from '@/models';
 import { endWithLauncher } from './death-signal.mjs';
 import { askQuestions } from './demo/analyses';
+import { companionsOf } from './demo/companions';
 import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
 import { demoPeople, makePassword } from './demo/people';
 import { type DemoSurvey, demoSurveys, drawSky } from './demo/sky';
-import { bringIn } from './demo/store';
+import { addLaterEpochs, bringIn } from './demo/store';
 
 const SLUG = 'breakwater';
 const say = (text: string) => process.stdout.write(`${text}\n`);
@@ -91,6 +92,7 @@ async function importSurvey(
   stars: ReturnType<typeof drawSky>,
 ): Promise<string> {
   const own = stars.filter((star) => star.surveys.includes(survey.slug));
+  const companions = companionsOf(survey, own);
   const [table] = await listCoolingTables(actor);
   const made = await createSurvey(actor, {
     name: survey.name,
@@ -125,9 +127,10 @@ async function importSurvey(
     actor,
     'companions',
     `${survey.slug}-companions.csv`,
-    companionsFile(survey, own),
+    companionsFile(companions),
     survey.slug,
   );
+  await addLaterEpochs(actor, survey.slug, companions);
   say(`${survey.name}: ${own.length} targets, maps computed`);
   return made.id;
 }

@@ -1,7 +1,7 @@
+import { inventedMagnitude } from './cooling';
 import type { DemoEpoch } from './epochs';
 import { drawEpochs } from './epochs';
 import { type DemoStar, type DemoSurvey, hostPlaces } from './sky';
-import { inventedMagnitude } from './cooling';
 
 /** One source beside a star, as the demonstration's files and screens hold it. */
 export interface DemoCompanion {
@@ -56,9 +56,7 @@ export function companionsOf(survey: DemoSurvey, stars: DemoStar[]): DemoCompani
   if (first && survey.slug === 'halyard') {
     const given = { name: 'b', status: 'confirmed', probability: 1 } as const;
     const days = ['2016-03-11', '2017-04-02', '2019-02-20'];
-    companions.push(
-      bound(first, { ...given, mass: [6.4, 0.9, 1.2], axis: [41, 5, 7] }, 36, days),
-    );
+    companions.push(bound(first, { ...given, mass: [6.4, 0.9, 1.2], axis: [41, 5, 7] }, 36, days));
   }
   if (second) {
     const given = { name: 'b', status: 'confirmed', probability: 1 } as const;

@@ -1,6 +1,9 @@
 import { writeCsv } from '@/lib/formats';
 import { createRandom, deriveSeed } from '@/lib/numerics/random';
-import { DEMO_SEED, type DemoStar, type DemoSurvey, hostPlaces } from './sky';
+import type { DemoCompanion } from './companions';
+import { inventedMagnitude } from './cooling';
+import { motionOf } from './epochs';
+import { DEMO_SEED, type DemoStar, type DemoSurvey } from './sky';
 
 type Column = Parameters<typeof writeCsv>[0][number];
 
@@ -19,6 +22,8 @@ export function targetsFile(survey: DemoSurvey, stars: DemoStar[]): string {
     star.gaiaDr3Id,
     star.raDeg,
     star.decDeg,
+    motionOf(star).pmRaMasYr,
+    motionOf(star).pmDecMasYr,
     star.distancePc,
     star.distanceErrorPc,
     star.ageMyr,
@@ -34,6 +39,8 @@ export function targetsFile(survey: DemoSurvey, stars: DemoStar[]): string {
       'gaia_dr3_id',
       'ra [deg]',
       'dec [deg]',
+      'pmra [mas/yr]',
+      'pmdec [mas/yr]',
       'distance [pc]',
       'distance_error [pc]',
       'age [Myr]',
@@ -88,46 +95,37 @@ const AGES = [
   1, 2, 3, 5, 7, 10, 14, 20, 30, 45, 65, 100, 150, 220, 320, 500, 800, 1300, 2200, 4000,
 ];
 
-/**
- * An invented cooling table: magnitudes fall by a fixed slope per decade of mass and rise with age,
- * faster in the bluer band. `shift` makes the second start model fainter while young.
- */
+/** An invented cooling table; `shift` makes the second start model fainter while young. */
 export function coolingFile(shift: number): string {
   const rows: (number | null)[][] = [];
   for (const age of AGES) {
     for (const mass of MASSES) {
-      const logMass = Math.log10(mass / 5);
-      const logAge = Math.log10(age / 20);
-      const late = shift * Math.exp(-age / 60) * Math.max(0, 1 + logMass);
-      const h = 15.5 - 5.0 * logMass + 3.2 * logAge + late;
-      rows.push([
-        age,
-        mass,
-        Number(h.toFixed(3)),
-        Number((h - 0.75 - 0.25 * logAge).toFixed(3)),
-        Number((h - 2.3 - 0.75 * logAge + 0.9 * logMass).toFixed(3)),
-      ]);
+      const of = (band: 'H' | 'K' | 'L') =>
+        Number(inventedMagnitude(mass, age, band, shift).toFixed(3));
+      rows.push([age, mass, of('H'), of('K'), of('L')]);
     }
   }
   return table(['age [Myr]', 'mass [Mjup]', 'mag_H [mag]', 'mag_K [mag]', 'mag_L [mag]'], rows);
 }
 
-/** Companions of a survey: the two detections, one candidate inside the ranges, some background. */
-export function companionsFile(survey: DemoSurvey, stars: DemoStar[]): string {
-  const at = (place: { raDeg: number; decDeg: number }) =>
-    stars.find((star) => star.raDeg === place.raDeg && star.decDeg === place.decDeg)?.name;
-  const rows: (string | number | null)[][] = [];
-  const first = at(hostPlaces.first);
-  const second = at(hostPlaces.second);
-  if (first && survey.slug === 'halyard')
-    rows.push([first, 'b', 'confirmed', 6.4, 0.9, 1.2, 41, 5, 7, 1]);
-  if (second) rows.push([second, 'b', 'confirmed', 14.6, 1.6, 2.1, 118, 18, 26, 1]);
-  const quiet = stars.filter((star) => star.name !== first && star.name !== second);
-  if (survey.slug === 'curlew')
-    rows.push([quiet[20].name, 'cc1', 'candidate', 8.2, 2.2, 2.9, 165, 30, 40, 0.35]);
-  rows.push([quiet[3].name, 'cc1', 'background', null, null, null, null, null, null, 0]);
-  if (survey.slug === 'halyard')
-    rows.push([quiet[9].name, 'cc1', 'background', null, null, null, null, null, null, 0]);
+/** The companions file of one survey; of each source it holds the first epoch. */
+export function companionsFile(companions: DemoCompanion[]): string {
+  const rows = companions.map(({ epochs: [first], ...one }) => [
+    one.star,
+    one.name,
+    one.status,
+    ...(one.mass ?? [null, null, null]),
+    ...(one.axis ?? [null, null, null]),
+    one.probability,
+    first.observedOn,
+    first.separationArcsec,
+    first.separationErrorArcsec,
+    first.positionAngleDeg,
+    first.positionAngleErrorDeg,
+    first.contrastMag,
+    first.contrastErrorMag,
+    first.band,
+  ]);
   return table(
     [
       'target',
@@ -140,6 +138,14 @@ export function companionsFile(survey: DemoSurvey, stars: DemoStar[]): string {
       'semi_major_axis_error_lower',
       'semi_major_axis_error_upper',
       'probability',
+      'epoch',
+      'separation [arcsec]',
+      'separation_error',
+      'position_angle [deg]',
+      'position_angle_error',
+      'contrast [mag]',
+      'contrast_error [mag]',
+      'band',
     ],
     rows,
   );
