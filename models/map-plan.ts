@@ -25,6 +25,9 @@ export interface MapPlan {
   reusable: WantedMap[];
   missing: WantedMap[];
   faults: { targetId: string; fault: string }[];
+  /** Every map that the curves should give, whether it is there or not. */
+  wanted: WantedMap[];
+  targets: TargetRow[];
 }
 
 async function loadCurves(
@@ -98,5 +101,7 @@ export async function planMaps(
     reusable: wanted.filter((map) => idOf.has(map.digest) && !isCurrent(map)),
     missing: wanted.filter((map) => !idOf.has(map.digest)),
     faults,
+    wanted,
+    targets,
   };
 }

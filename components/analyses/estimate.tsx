@@ -112,7 +112,7 @@ function estimateWords(state: {
   hasSurveys: boolean;
 }): string {
   if (state.needsRun) {
-    return 'An estimate before the run knows plain power laws only; the run itself answers for this population.';
+    return 'An estimate before the run knows plain power laws and whole surveys only; the run itself answers for this choice.';
   }
   if (!state.hasRun) {
     return 'No run has finished in this collaboration yet, so there are no maps at hand to estimate from. The first run computes the limit itself.';

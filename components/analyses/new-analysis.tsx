@@ -23,6 +23,7 @@ import { suggestName } from './name-words';
 import { tallyOpen } from './open-candidates';
 import { PopulationChoice } from './population-choice';
 import { RateChoice, type RateSetting } from './rate-choice';
+import { SampleChoice } from './sample-choice';
 import { SurveyChoice } from './survey-choice';
 
 interface NewAnalysisProps {
@@ -59,6 +60,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
   const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
   const [candidates, setCandidates] = useState<AnalysisRecipe['candidates']>();
   const [combination, setCombination] = useState<AnalysisRecipe['combination']>('default');
+  const [sampleId, setSampleId] = useState<string>();
   const [rate, setRate] = useState<RateSetting>(FIRST_RATE);
   const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
   const [ownName, setOwnName] = useState<string>();
@@ -83,6 +85,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
     detections,
     combination,
     zeroOutsideMaps,
+    ...(sampleId && { sampleId }),
     ...(candidates && detections === 'counted' && { candidates }),
   };
   const checked = analysisRecipeSchema.safeParse(recipe);
@@ -111,15 +114,23 @@ export function NewAnalysis(props: NewAnalysisProps) {
       />
       <div className="grid gap-x-14 gap-y-8 xl:grid-cols-[1fr_400px]">
         <div className="grid min-w-0 gap-8">
-          <SurveyChoice
-            surveys={offered}
-            overlaps={surveys.overlaps}
-            chosen={chosen}
-            onChange={setChosen}
-            address={`/${collaboration}/surveys`}
-          >
-            <CombinationChoice chosen={combination} onChange={setCombination} />
-          </SurveyChoice>
+          <div className="min-w-0">
+            <SurveyChoice
+              surveys={offered}
+              overlaps={surveys.overlaps}
+              chosen={chosen}
+              onChange={setChosen}
+              address={`/${collaboration}/surveys`}
+            >
+              <CombinationChoice chosen={combination} onChange={setCombination} />
+            </SurveyChoice>
+            <SampleChoice
+              collaboration={collaboration}
+              surveyIds={chosen}
+              chosen={sampleId}
+              onChange={setSampleId}
+            />
+          </div>
           <PopulationChoice
             collaboration={collaboration}
             populations={populations}
@@ -150,9 +161,15 @@ export function NewAnalysis(props: NewAnalysisProps) {
             collaboration={collaboration}
             run={previewRun}
             surveys={chosenSurveys}
-            needsRun={population !== undefined && !isPlainPowerLaw(population.definition)}
+            needsRun={
+              sampleId !== undefined ||
+              (population !== undefined && !isPlainPowerLaw(population.definition))
+            }
             setting={
-              checked.success && population && isPlainPowerLaw(population.definition)
+              sampleId === undefined &&
+              checked.success &&
+              population &&
+              isPlainPowerLaw(population.definition)
                 ? { ...recipe, definition: population.definition }
                 : undefined
             }

@@ -9,6 +9,7 @@ import {
   companionSchema,
   coolingTableSchema,
   type createSurveySchema,
+  type MarkTarget,
   type SurveyList,
   type SurveyView,
   surveyListSchema,
@@ -137,13 +138,11 @@ export function startMaps(collaboration: string, slug: string): Promise<JobView>
   return request(apiPath(collaboration, 'surveys', slug, 'maps'), jobSchema, { method: 'POST' });
 }
 
-export function leaveTargetOut(
+/** Leaves a target out with a reason, takes it back in, or marks how it was chosen. */
+export function markTarget(
   collaboration: string,
   id: string,
-  leftOutReason: string | null,
+  body: MarkTarget,
 ): Promise<TargetView> {
-  return request(apiPath(collaboration, 'targets', id), targetSchema, {
-    method: 'PATCH',
-    body: { leftOutReason },
-  });
+  return request(apiPath(collaboration, 'targets', id), targetSchema, { method: 'PATCH', body });
 }

@@ -5,7 +5,7 @@ import { CompletenessMapChart } from '@/components/charts/completeness-map-chart
 import { ContrastChart } from '@/components/charts/contrast-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { leaveTargetOut, useMap } from '@/components/hooks/use-surveys';
+import { markTarget, useMap } from '@/components/hooks/use-surveys';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -15,6 +15,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
 import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { CompanionView, SurveyView, TargetView } from '@/lib/schemas/surveys';
+import { ChosenForCompanion } from './chosen-for-companion';
 import { formatErrorPart, formatMeasured } from './measured';
 
 interface TargetPanelProps {
@@ -55,7 +56,7 @@ function LeaveOut({
   const apply = async (next: string | null) => {
     setRefusal(null);
     try {
-      await leaveTargetOut(collaboration, target.id, next);
+      await markTarget(collaboration, target.id, { leftOutReason: next });
       setOpen(false);
       onChanged();
     } catch (failure) {
@@ -170,7 +171,17 @@ export function TargetPanel(props: TargetPanelProps) {
         {survey.can.change && (
           <div className="mt-1">
             <LeaveOut collaboration={collaboration} target={target} onChanged={onChanged} />
+            <ChosenForCompanion
+              collaboration={collaboration}
+              target={target}
+              onChanged={onChanged}
+            />
           </div>
+        )}
+        {!survey.can.change && target.selectedForCompanion && (
+          <p className="mt-1 text-[14px] text-warn">
+            Chosen because a companion was known: left out of runs unless their sample keeps it.
+          </p>
         )}
       </div>
       {curves.length > 0 && (

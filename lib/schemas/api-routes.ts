@@ -17,8 +17,9 @@ import {
 import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
 import { candidateRoutes } from './candidate-routes';
-import { idSchema, pageSchema, roleSchema } from './common';
+import { pageSchema, roleSchema } from './common';
 import { jobSchema } from './jobs';
+import { surveyMapsSchema } from './map-states';
 import { overviewSchema } from './overview';
 import {
   changeRolesSchema,
@@ -60,20 +61,6 @@ import { uploadQuerySchema, uploadSchema, uploadSettingsSchema } from './uploads
 export type { ApiMethod, ApiRoute } from './api-route';
 
 const bytes = ['application/octet-stream'];
-const surveyMapsSchema = z.object({
-  job: jobSchema.nullable(),
-  maps: z.array(
-    z.object({
-      target: z.string(),
-      targetId: idSchema,
-      mapId: idSchema.nullable(),
-      state: z.string(),
-      fault: z.string().nullable(),
-      digest: z.string().nullable(),
-      checksum: z.string().nullable(),
-    }),
-  ),
-});
 const membershipSchema = z.object({
   slug: z.string(),
   name: z.string(),

@@ -1,4 +1,5 @@
 import { type ApiRoute, listOf, route, team } from './api-route';
+import { mapStoreSchema } from './map-states';
 import {
   createSampleSchema,
   previewSampleSchema,
@@ -6,7 +7,7 @@ import {
   sampleSchema,
 } from './samples';
 
-/** Selections of stars. */
+/** Selections of stars, and how the maps of the store stand. */
 export const sampleRoutes: readonly ApiRoute[] = [
   route('get', `${team}/samples`, 'read', 'Every version of every sample', {
     answer: listOf('samples', sampleSchema),
@@ -19,5 +20,8 @@ export const sampleRoutes: readonly ApiRoute[] = [
   route('post', `${team}/samples/preview`, 'read', 'What a selection of stars would hold', {
     body: previewSampleSchema,
     answer: samplePreviewSchema,
+  }),
+  route('get', `${team}/maps`, 'read', 'How the maps of each survey stand, and why not current', {
+    answer: mapStoreSchema,
   }),
 ];

@@ -1,11 +1,14 @@
+import { Op } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
-import { demand } from '@/lib/access/permissions';
+import { demand, may } from '@/lib/access/permissions';
 import { Conflict, NotFound } from '@/lib/errors';
 import { enqueueMaps } from '@/lib/queue/enqueue';
 import { idSchema } from '@/lib/schemas/common';
 import type { JobView } from '@/lib/schemas/jobs';
+import type { MapState, MapStore, SurveyMaps } from '@/lib/schemas/map-states';
 import type { MapView } from '@/lib/schemas/sensitivity';
-import { CompletenessMapRow, inTransaction, JobRow, TargetRow } from '@/models';
+import { CompletenessMapRow, inTransaction, JobRow, SurveyRow, TargetRow } from '@/models';
+import { readMapStates } from '@/models/map-standings';
 import { unpackMap } from '@/models/map-values';
 import { recordAudit } from './audit';
 import { describeJob } from './jobs';
@@ -50,37 +53,27 @@ export async function getMapBytes(actor: Actor, id: string) {
   };
 }
 
-export interface SurveyMaps {
-  job: JobView | null;
-  maps: {
-    target: string;
-    targetId: string;
-    mapId: string | null;
-    state: string;
-    fault: string | null;
-    digest: string | null;
-    checksum: string | null;
-  }[];
-}
-
 /** The state of each target's map, and the newest computation. */
 export async function listSurveyMaps(actor: Actor, slug: string): Promise<SurveyMaps> {
   const survey = await findSurvey(actor, slug);
-  const [targets, job] = await Promise.all([
+  const [targets, states, job] = await Promise.all([
     TargetRow.findAll({
       where: { surveyId: survey.id },
       include: [{ model: CompletenessMapRow, as: 'map', attributes: ['digest', 'checksum'] }],
       order: [['foldedName', 'ASC']],
     }),
+    readMapStates(survey),
     JobRow.findOne({
       where: { surveyId: survey.id, kind: 'compute-maps' },
       order: [['createdAt', 'DESC']],
     }),
   ]);
+  const stateOf = new Map(states.map((state) => [state.targetId, state]));
   return {
     job: job && (await describeJob(job)),
     maps: targets.map((target) => {
       const map = (target as TargetRow & { map: CompletenessMapRow | null }).map;
+      const { standing = 'none', reason = null, words = null } = stateOf.get(target.id) ?? {};
       return {
         target: target.name,
         targetId: target.id,
@@ -89,12 +82,15 @@ export async function listSurveyMaps(actor: Actor, slug: string): Promise<Survey
         fault: target.mapFault,
         digest: map?.digest ?? null,
         checksum: map?.checksum ?? null,
+        standing,
+        reason,
+        words,
       };
     }),
   };
 }
 
-/** Starts the computation of every map of the survey that is not there yet. */
+/** Starts the computation of the survey's maps that are missing or stale; current ones stay. */
 export async function startMaps(actor: Actor, slug: string): Promise<JobView> {
   const survey = await findSurvey(actor, slug);
   demand(actor, 'import', { isLead: isLead(actor, survey) });
@@ -123,4 +119,39 @@ export async function startMaps(actor: Actor, slug: string): Promise<JobView> {
   const job = await JobRow.findByPk(jobId);
   if (!job) throw new NotFound('job');
   return describeJob(job);
+}
+
+/** How the maps of every survey stand, archived ones left out. */
+export async function readMapStore(actor: Actor): Promise<MapStore> {
+  demand(actor, 'read');
+  const rows = await SurveyRow.findAll({
+    where: { collaborationId: actor.collaborationId, archivedAt: { [Op.is]: null } },
+    order: [['position', 'ASC']],
+  });
+  const surveys: MapStore['surveys'] = [];
+  for (const row of rows) {
+    const states = await readMapStates(row);
+    const count = (standing: MapState['standing']) =>
+      states.filter((state) => state.standing === standing).length;
+    const reasons = new Map<NonNullable<MapState['reason']>, number>();
+    for (const { reason } of states) {
+      if (reason) reasons.set(reason, (reasons.get(reason) ?? 0) + 1);
+    }
+    surveys.push({
+      slug: row.slug,
+      name: row.name,
+      position: row.position,
+      standings: {
+        current: count('current'),
+        stale: count('stale'),
+        missing: count('missing'),
+        failed: count('failed'),
+        uploaded: count('uploaded'),
+        none: count('none'),
+      },
+      reasons: [...reasons].map(([reason, maps]) => ({ reason, maps })),
+      canRefresh: may(actor, 'import', { isLead: isLead(actor, row) }),
+    });
+  }
+  return { surveys };
 }

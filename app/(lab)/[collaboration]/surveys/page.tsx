@@ -25,11 +25,20 @@ export default async function SurveysPage({
           `${list.entries} entries, ${list.stars} stars; a star in several surveys counts once`
         }
         actions={
-          canAdd &&
           list.surveys.length > 0 && (
-            <LinkButton href={`/${actor.collaboration}/surveys/new`} variant="primary" icon="add">
-              Add a survey
-            </LinkButton>
+            <>
+              <LinkButton href={`/${actor.collaboration}/stars/samples`}>Samples</LinkButton>
+              <LinkButton href={`/${actor.collaboration}/maps`}>Maps</LinkButton>
+              {canAdd && (
+                <LinkButton
+                  href={`/${actor.collaboration}/surveys/new`}
+                  variant="primary"
+                  icon="add"
+                >
+                  Add a survey
+                </LinkButton>
+              )}
+            </>
           )
         }
       />

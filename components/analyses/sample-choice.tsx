@@ -1,0 +1,55 @@
+'use client';
+
+import Link from 'next/link';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useSamplePreview, useSamples } from '@/components/hooks/use-samples';
+import { SelectField } from '@/components/ui/select-field';
+import { type SamplePreview, sampleDefinitionSchema } from '@/lib/schemas/samples';
+
+interface SampleChoiceProps {
+  collaboration: string;
+  surveyIds: string[];
+  chosen: string | undefined;
+  onChange(sampleId: string | undefined): void;
+}
+
+const EVERY_STAR = sampleDefinitionSchema.parse({});
+
+/** Which of the surveys' stars the analysis rests on: all, or those of a saved sample. */
+export function SampleChoice({ collaboration, surveyIds, chosen, onChange }: SampleChoiceProps) {
+  const { data: samples = [], error } = useSamples(collaboration);
+  const sample = samples.find(({ id }) => id === chosen);
+  const { data: preview } = useSamplePreview(
+    collaboration,
+    sample?.definition ?? EVERY_STAR,
+    surveyIds,
+  );
+  const offered = samples.filter(({ isLatest, id }) => isLatest || id === chosen);
+  return (
+    <div className="mt-3 max-w-[40rem]">
+      <SelectField
+        label="Stars of these surveys"
+        value={chosen ?? ''}
+        onChange={(event) => onChange(event.target.value || undefined)}
+        error={error && sentenceOf(error)}
+        hint={`${sample ? `${sample.words}. ` : ''}${preview ? countWords(preview) : ''}`}
+        aside={<Link href={`/${collaboration}/stars/samples`}>Samples</Link>}
+        options={[
+          { value: '', label: 'All that are not chosen for a known companion' },
+          ...offered.map(({ id, key, version, name }) => ({
+            value: id,
+            label: `${key} version ${version}, ${name}`,
+          })),
+        ]}
+      />
+    </div>
+  );
+}
+
+function countWords({ stars, leftOut }: SamplePreview): string {
+  const count = `${stars.selected} of ${stars.all} stars.`;
+  const hosts = leftOut.find(({ reason }) => reason.startsWith('chosen because'))?.entries;
+  if (hosts === undefined) return count;
+  const words = hosts === 1 ? '1 entry was' : `${hosts} entries were`;
+  return `${count} ${words} chosen because a companion was known, and left out.`;
+}

@@ -1,0 +1,30 @@
+'use client';
+
+import useSWR from 'swr';
+import { type MapStore, mapStoreSchema, surveyMapsSchema } from '@/lib/schemas/map-states';
+import { apiPath } from './api-path';
+import { request } from './request';
+
+const POLL_MS = 2000;
+
+/** The map of each target of a survey against what it should be now; followed while maps arrive. */
+export function useSurveyMaps(collaboration: string, slug: string, stamp = '') {
+  return useSWR(
+    [apiPath(collaboration, 'surveys', slug, 'maps'), stamp],
+    ([path]) => request(path, surveyMapsSchema),
+    {
+      keepPreviousData: true,
+      revalidateOnFocus: false,
+      refreshInterval: (answer) =>
+        answer?.job?.status === 'running' || answer?.job?.status === 'waiting' ? POLL_MS : 0,
+    },
+  );
+}
+
+/** How the maps of every survey stand. */
+export function useMapStore(collaboration: string, fallback: MapStore) {
+  return useSWR(apiPath(collaboration, 'maps'), (path) => request(path, mapStoreSchema), {
+    fallbackData: fallback,
+    revalidateOnFocus: false,
+  });
+}

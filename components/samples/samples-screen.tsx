@@ -1,0 +1,149 @@
+'use client';
+
+import { useDeferredValue, useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { createSample, useSamplePreview, useSamples } from '@/components/hooks/use-samples';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { TextAction } from '@/components/ui/text-action';
+import { TextField } from '@/components/ui/text-field';
+import type { SampleView } from '@/lib/schemas/samples';
+import type { SurveyView } from '@/lib/schemas/surveys';
+import { SampleCounts } from './sample-counts';
+import { draftOf, EMPTY_DRAFT, readDraft, type SampleDraft } from './sample-draft';
+import { SampleForm } from './sample-form';
+import { SampleTable } from './sample-table';
+
+interface SamplesScreenProps {
+  collaboration: string;
+  surveys: SurveyView[];
+  initial: SampleView[];
+}
+
+/** Saved selections of stars, and one that is being made, with what it holds at each change. */
+export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreenProps) {
+  const { data: samples = initial, mutate } = useSamples(collaboration, initial);
+  const [draft, setDraft] = useState<SampleDraft>(EMPTY_DRAFT);
+  const [open, setOpen] = useState<SampleView>();
+  const [name, setName] = useState('');
+  const [busy, setBusy] = useState<'new' | 'version'>();
+  const [problem, setProblem] = useState<string>();
+  const read = readDraft(draft);
+  const { definition } = read;
+  const asked = useDeferredValue(definition);
+  const { data: preview, error, isLoading } = useSamplePreview(collaboration, asked);
+
+  const show = (sample: SampleView | undefined) => {
+    setOpen(sample);
+    setDraft(sample ? draftOf(sample.definition) : EMPTY_DRAFT);
+    setName(sample?.name ?? '');
+    setProblem(undefined);
+  };
+  const save = async (versionOf: number | undefined) => {
+    if (!definition) return;
+    setBusy(versionOf === undefined ? 'new' : 'version');
+    setProblem(undefined);
+    try {
+      const saved = await createSample(collaboration, { name, definition, versionOf });
+      await mutate();
+      setOpen(saved);
+    } catch (reason) {
+      setProblem(sentenceOf(reason));
+    } finally {
+      setBusy(undefined);
+    }
+  };
+  const fault =
+    name.trim() === ''
+      ? 'Give it a name first.'
+      : definition === undefined
+        ? 'The form holds something that is no selection.'
+        : undefined;
+
+  return (
+    <>
+      <PageTitle
+        title="Samples"
+        crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: 'Samples' }]}
+        context="Selections of stars that analyses rest on. A star chosen because a companion was known is left out unless a sample keeps it."
+      />
+      <div className="grid gap-x-14 gap-y-8 pb-10 xl:grid-cols-[420px_1fr]">
+        <section className="min-w-0">
+          <SectionOpener
+            number={1}
+            title="Which stars"
+            context={open ? `${open.key}, version ${open.version}` : 'a new sample'}
+            tools={open && <TextAction onClick={() => show(undefined)}>New sample</TextAction>}
+          />
+          <SampleForm
+            draft={draft}
+            faults={read.faults}
+            surveys={surveys}
+            groups={preview?.movingGroups ?? []}
+            onChange={setDraft}
+          />
+          <div className="mt-5 grid gap-4">
+            <TextField
+              label="Name"
+              value={name}
+              maxLength={100}
+              onChange={(event) => setName(event.target.value)}
+            />
+            {problem !== undefined && (
+              <Notice tone="bad" title="It was not saved." isAnnounced>
+                {problem}
+              </Notice>
+            )}
+            <div className="flex flex-wrap gap-2">
+              {open?.can.saveVersion && (
+                <Button
+                  variant="primary"
+                  disabledReason={fault}
+                  isBusy={busy === 'version'}
+                  onClick={() => save(open.number)}
+                >
+                  Save version {open.version + 1} of {open.key}
+                </Button>
+              )}
+              <Button
+                variant={open?.can.saveVersion ? 'normal' : 'primary'}
+                disabledReason={fault}
+                isBusy={busy === 'new'}
+                onClick={() => save(undefined)}
+              >
+                Save as a new sample
+              </Button>
+            </div>
+          </div>
+        </section>
+        <div className="grid min-w-0 content-start gap-8">
+          <section className="min-w-0">
+            <SectionOpener number={2} title="What it holds" context="now, before it is saved" />
+            {error !== undefined && (
+              <Notice tone="bad" title="It could not be counted.">
+                {sentenceOf(error)}
+              </Notice>
+            )}
+            {preview ? (
+              <SampleCounts preview={preview} isOld={isLoading || definition === undefined} />
+            ) : (
+              error === undefined && <p className="text-ink3">The stars are being counted.</p>
+            )}
+          </section>
+          <section className="min-w-0">
+            <SectionOpener number={3} title="Saved" context="a version never changes" />
+            {samples.length === 0 ? (
+              <p className="text-ink2">
+                No sample yet. Without one, an analysis takes every star of its surveys.
+              </p>
+            ) : (
+              <SampleTable samples={samples} openId={open?.id} onOpen={show} />
+            )}
+          </section>
+        </div>
+      </div>
+    </>
+  );
+}
