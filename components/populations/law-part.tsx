@@ -5,7 +5,7 @@ import { EditableRange } from '@/components/runs/editable-range';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import type { AxisConvention, AxisShape } from '@/lib/population';
-import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
+import { formatPlain } from '@/lib/quantities/display';
 import { BuilderPart } from './builder-part';
 import type { BuilderSetting } from './builder-setting';
 import { ConventionChoice } from './convention-choice';
@@ -20,7 +20,7 @@ import {
 import { OwnDistribution } from './own-distribution';
 import { ShapeDrawing } from './shape-drawing';
 import { ShapeNumbers } from './shape-numbers';
-import { axisNotation, RangeWords, ShapeWords } from './shape-words';
+import { axisNotation, RangeWords, ShapeWords, WithUnit } from './shape-words';
 
 export interface LawPartProps {
   number: number;
@@ -79,6 +79,8 @@ export function LawPart(props: LawPartProps) {
   const placeField = { 'broken-power-law': 'breakAt', 'log-normal': 'median' } as const;
   const hasPlace = shape.shape === 'broken-power-law' || shape.shape === 'log-normal';
   const place = placeOf(shape);
+  // One number and the range share a row; the drawing then has the next one to itself.
+  const isAlone = shape.shape === 'power-law' || shape.shape === 'log-normal';
 
   return (
     <BuilderPart number={number} title={title}>
@@ -118,37 +120,33 @@ export function LawPart(props: LawPartProps) {
             />
           </div>
         )}
-        <ShapeDrawing
-          name={name}
-          label={hasPlace ? placeNames[shape.shape] : 'drawn, per logarithm'}
-          valueLabel={
-            place !== undefined && (
-              <>
-                {formatPlain(place)}
-                {THIN_SPACE}
-                {unit}
-              </>
-            )
-          }
-          shape={shape}
-          range={range}
-          bounds={bounds}
-          place={
-            hasPlace && place !== undefined
-              ? {
-                  name: placeNames[shape.shape],
-                  value: place,
-                  savedValue: props.saved && placeOf(props.saved[axis].shape),
-                  valueText: `${formatPlain(place)} ${unitWords}`,
-                  onChange: (value, isSettled) =>
-                    changePart(
-                      { shape: { ...shape, [placeField[shape.shape]]: value } as AxisShape },
-                      isSettled,
-                    ),
-                }
-              : undefined
-          }
-        />
+        <div className={`min-w-0 ${isAlone ? 'order-last sm:col-span-2' : ''}`}>
+          <ShapeDrawing
+            name={name}
+            label={hasPlace ? placeNames[shape.shape] : 'drawn, per logarithm'}
+            valueLabel={
+              place !== undefined && <WithUnit unit={unit}>{formatPlain(place)}</WithUnit>
+            }
+            shape={shape}
+            range={range}
+            bounds={bounds}
+            place={
+              hasPlace && place !== undefined
+                ? {
+                    name: placeNames[shape.shape],
+                    value: place,
+                    savedValue: props.saved && placeOf(props.saved[axis].shape),
+                    valueText: `${formatPlain(place)} ${unitWords}`,
+                    onChange: (value, isSettled) =>
+                      changePart(
+                        { shape: { ...shape, [placeField[shape.shape]]: value } as AxisShape },
+                        isSettled,
+                      ),
+                  }
+                : undefined
+            }
+          />
+        </div>
         <RangeControl
           name={name}
           label="range"

@@ -31,6 +31,8 @@ interface ParameterSliderProps {
   savedValue?: number;
   /** Ends of the track as shown. */
   track: readonly [number, number];
+  /** Numbers under the track, where even steps would be wrong. */
+  ticks?: number[];
   step: number;
   /** From the stored number to the shown one and back. */
   toShown(value: number): number;
@@ -80,6 +82,7 @@ export function ParameterSlider(props: ParameterSliderProps) {
       min={min}
       max={max}
       step={props.step}
+      ticks={props.ticks}
       onChange={(next, isSettled) => props.onChange(tidy(fromShown(next), 9), isSettled)}
       formatLimit={(limit) => (Number.isFinite(limit) ? formatPercent(limit) : 'no limit')}
       formatValue={formatIndex}

@@ -41,7 +41,7 @@ export function PreviewFacts({ answer, population, setting, stars }: PreviewFact
                 },
               ]),
           {
-            name: isScaled ? 'sum over stars, each by its rate' : 'sum over stars',
+            name: isScaled ? 'sum, each star by its rate' : 'sum over stars',
             value: formatSignificant(view.exposure, 3),
             note: `of ${stars}`,
           },

@@ -24,7 +24,11 @@ const numbers: Record<string, NumberField[]> = {
 
 const tracks = { mass: TRACK.massIndex, semiMajorAxis: TRACK.semiMajorAxisIndex };
 const SPREAD_TRACK = [0.05, 1.5] as const;
+const SPREAD_TICKS = [0.05, 0.5, 1, 1.5];
 const same = (value: number) => value;
+/** What a conversion leaves in the last bits must not move an end by a tenth. */
+const tenthBelow = (value: number) => Math.floor(10 * value + 1e-6) / 10;
+const tenthAbove = (value: number) => Math.ceil(10 * value - 1e-6) / 10;
 
 /** Sliders of the numbers that a form has beside its place on the axis. */
 export function ShapeNumbers(props: LawPartProps) {
@@ -55,11 +59,8 @@ export function ShapeNumbers(props: LawPartProps) {
         sample={sample}
         value={value}
         savedValue={saved && readParameter(saved, parameter)}
-        track={
-          isSpread
-            ? SPREAD_TRACK
-            : [Math.floor(10 * shown(from)) / 10, Math.ceil(10 * shown(to)) / 10]
-        }
+        track={isSpread ? SPREAD_TRACK : [tenthBelow(shown(from)), tenthAbove(shown(to))]}
+        ticks={isSpread ? SPREAD_TICKS : undefined}
         step={isSpread ? 0.01 : 0.05}
         toShown={isSpread ? same : (index) => fromLogIndex(index, convention)}
         fromShown={isSpread ? same : (index) => toLogIndex(index, convention)}

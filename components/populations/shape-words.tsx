@@ -15,7 +15,8 @@ export function axisNotation(axis: LawAxis, isRatio: boolean) {
     : { symbol: 'M', unit: 'MJ', unitWords: 'Jupiter masses' };
 }
 
-function WithUnit({ unit, children }: { unit: string; children: ReactNode }) {
+/** A number with the unit of its axis; a mass ratio has none. */
+export function WithUnit({ unit, children }: { unit: string; children: ReactNode }) {
   return (
     <span className="whitespace-nowrap">
       {children}

@@ -1,12 +1,11 @@
 import { limitPlane } from '@/components/populations/limit-plane';
 import { parameterTrace } from '@/components/populations/preview-figures';
-import { consequencesOf, linearTrace } from './consequences';
+import { consequencesOf } from './consequences';
 import type { LiveSample } from './live-sample';
 
 /** What takes longer than a frame: done beside the page, in a thread of its own. */
 export const liveTasks = {
   consequences: consequencesOf,
-  linearTrace,
   limitPlane,
   parameterTrace,
 };
