@@ -3,12 +3,7 @@ import { DELETE as removeObservation } from '@/app/api/v1/collaborations/[collab
 import { POST as addObservation } from '@/app/api/v1/collaborations/[collaboration]/candidates/[candidate]/observations/route';
 import { GET as getCandidate } from '@/app/api/v1/collaborations/[collaboration]/candidates/[candidate]/route';
 import { POST as giveVerdict } from '@/app/api/v1/collaborations/[collaboration]/candidates/[candidate]/verdicts/route';
-import { GET as listCandidates } from '@/app/api/v1/collaborations/[collaboration]/candidates/route';
-import {
-  type CandidateDetail,
-  candidateDetailSchema,
-  candidateListSchema,
-} from '@/lib/schemas/candidates';
+import { type CandidateDetail, candidateDetailSchema } from '@/lib/schemas/candidates';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import { builtInMagnitude } from '@/lib/sensitivity';
 import {
@@ -39,7 +34,6 @@ let lead: TestPerson;
 let survey: SurveyRow;
 let target: TargetRow;
 let owner: Record<string, string>;
-let foreign: { headers: Record<string, string>; slug: string };
 
 const MOTION = { pmRaMasYr: 85.2, pmDecMasYr: -61.7 };
 /** Astropy 5.2.1: a source at infinity beside the star of the first sample, by day. */
@@ -67,11 +61,6 @@ beforeAll(async () => {
     attributes: MOTION,
   });
   owner = bearer(await tokenOf(people.owner, collaboration));
-  const other = await createCollaborationWith(['owner']);
-  foreign = {
-    headers: bearer(await tokenOf(other.people.owner, other.collaboration)),
-    slug: other.collaboration.slug,
-  };
 });
 
 let made = 0;
@@ -316,60 +305,5 @@ describe('verdicts', () => {
       [true, people.student.name],
       [false, lead.name],
     ]);
-  });
-});
-
-describe('GET candidates', () => {
-  it('lists what waits for a person first, and filters', async () => {
-    const params = { collaboration: collaboration.slug };
-    const all = candidateListSchema.parse(
-      await (await call(listCandidates, { headers: owner, params })).json(),
-    );
-    expect(all.total).toBe(all.candidates.length);
-    expect(all.lead).toBeNull();
-    const ranks = all.candidates.map(({ isOpen }) => (isOpen ? 0 : 1));
-    expect(ranks).toEqual([...ranks].sort());
-    const filtered = candidateListSchema.parse(
-      await (
-        await call(listCandidates, {
-          headers: owner,
-          params,
-          path: `/candidates?status=background&survey=${survey.slug}&limit=2`,
-        })
-      ).json(),
-    );
-    expect(filtered.candidates.map(({ status }) => status)).toEqual(['background', 'background']);
-    expect(filtered.total).toBe(all.counts.background);
-    expect(filtered.counts).toEqual(all.counts);
-  });
-
-  it('shows nothing to another collaboration, and answers absent and foreign alike', async () => {
-    const row = await candidate();
-    const params = { collaboration: foreign.slug };
-    const list = candidateListSchema.parse(
-      await (await call(listCandidates, { headers: foreign.headers, params })).json(),
-    );
-    expect(list).toMatchObject({ candidates: [], total: 0 });
-    const verdict = { status: 'background', reason: 'not ours' };
-    const absent = '00000000-0000-4000-8000-000000000000';
-    for (const [handler, method, body] of [
-      [getCandidate, 'GET', undefined],
-      [giveVerdict, 'POST', verdict],
-      [addObservation, 'POST', epochOf('2016-01-01', 1, 1)],
-    ] as const) {
-      const answers = await Promise.all(
-        [row.id, absent, '1 or 1=1', ''].map((id) =>
-          call(handler, {
-            method,
-            headers: foreign.headers,
-            params: { ...params, candidate: id },
-            body,
-          }),
-        ),
-      );
-      expect(answers.map(({ status }) => status)).toEqual([404, 404, 404, 404]);
-      expect(new Set(await Promise.all(answers.map((answer) => answer.text()))).size).toBe(1);
-    }
-    expect((await row.reload()).status).toBe('candidate');
   });
 });
