@@ -39,9 +39,13 @@ export function InWords({ setting, fault, grid, hasMaps }: InWordsProps) {
       <p className="text-body leading-normal">
         {parts.isRatio ? 'Ratios of planet to star mass' : 'Planet masses'}
         {followWords(parts.mass.shape.shape)}
-        {law('mass')} over <RangeWords axis="mass" parts={parts} />, semi-major axes
+        {law('mass')}
+        {overWords(parts.mass.shape.shape)} <RangeWords axis="mass" parts={parts} />, semi-major
+        axes
         {followWords(parts.semiMajorAxis.shape.shape)}
-        {law('semiMajorAxis')} over <RangeWords axis="semiMajorAxis" parts={parts} />
+        {law('semiMajorAxis')}
+        {overWords(parts.semiMajorAxis.shape.shape)}{' '}
+        <RangeWords axis="semiMajorAxis" parts={parts} />
         {parts.hostScaling ? (
           <>
             , <ScalingWords {...parts.hostScaling} />
@@ -62,6 +66,11 @@ export function InWords({ setting, fault, grid, hasMaps }: InWordsProps) {
       </div>
     </section>
   );
+}
+
+/** Before the range; what has clauses of its own is closed by a comma. */
+function overWords(shape: string): string {
+  return shape === 'power-law' ? ' over' : ', over';
 }
 
 function followWords(shape: string): string {
