@@ -1,6 +1,7 @@
 import type { Transaction } from 'sequelize';
 import { Op } from 'sequelize';
 import type { StarInputs } from '@/lib/sensitivity';
+import { applyAdopted, loadAdopted } from './adopted-values';
 import { CompletenessMapRow, ContrastCurveRow, SurveyRow, TargetRow } from './index';
 import { loadRecipe, type MapRecipe, mapDigest, mapInputs } from './map-recipe';
 import { openCandidates } from './star-facts';
@@ -68,6 +69,8 @@ export async function planMaps(
     ],
     transaction,
   });
+  const adopted = await loadAdopted(collaborationId, transaction);
+  for (const target of targets) applyAdopted(target, adopted);
   const curvesOf = await loadCurves(targets, transaction);
   const faults: MapPlan['faults'] = [];
   const wanted: (WantedMap & { linkedMapId: string | null })[] = [];

@@ -10,6 +10,9 @@ export interface StatedValue {
 /** Two values of one quantity differ by more than this many standard deviations: a conflict. */
 export const CONFLICT_SIGMA = 2;
 
+/** Without any error, values this close are taken for one. */
+const SAME_SHARE = 0.05;
+
 interface Spread {
   value: number;
   below: number;
@@ -30,15 +33,17 @@ function spreadOf({ value, lower, upper, min, max }: StatedValue): Spread | null
  * How far two statements of one quantity lie apart, in units of their errors on the sides that face
  * each other, added in quadrature.
  *
- * @returns null where one of them states nothing; Infinity where they differ and neither has an error
+ * @returns null where one of them states nothing; Infinity where they differ by more than 5 % and neither
+ *   has an error
  */
 export function sigmasApart(one: StatedValue, other: StatedValue): number | null {
   const a = spreadOf(one);
   const b = spreadOf(other);
   if (!a || !b) return null;
-  if (a.value === b.value) return 0;
   const [low, high] = a.value < b.value ? [a, b] : [b, a];
-  return (high.value - low.value) / Math.hypot(low.above, high.below);
+  const error = Math.hypot(low.above, high.below);
+  if (error > 0) return (high.value - low.value) / error;
+  return high.value - low.value <= SAME_SHARE * high.value ? 0 : Number.POSITIVE_INFINITY;
 }
 
 /** The largest of sigmasApart over all pairs; null where fewer than two state a value. */

@@ -58,8 +58,9 @@ export async function enqueueMaps(
   },
 ): Promise<string> {
   const { collaborationId, surveyId, requestedBy, targetIds } = asked;
-  // One after the other: two requests for one survey would both find no open job.
-  await select('select id from survey where id = $1 for update', [surveyId], transaction);
+  // One after the other: two requests for one survey would both find no open job. The key stays
+  // free, since a worker that ends its job looks at the survey while it holds what we ask for next.
+  await select('select id from survey where id = $1 for no key update', [surveyId], transaction);
   const open = await select<{ id: string; payload: { targetIds?: string[] } }>(
     `select id, payload from job where survey_id = $1 and kind = 'compute-maps'
        and status in ('waiting', 'running') for update`,

@@ -44,6 +44,7 @@ import { createPopulationSchema, populationSchema } from './populations';
 import { runSchema, runSummarySchema } from './runs';
 import { sampleRoutes } from './sample-routes';
 import { mapViewSchema } from './sensitivity';
+import { starRoutes } from './star-routes';
 import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
 import {
   companionSchema,
@@ -316,4 +317,5 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...sampleRoutes,
   ...analyses,
   ...candidateRoutes,
+  ...starRoutes,
 ];

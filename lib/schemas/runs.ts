@@ -88,6 +88,16 @@ export const runInputsSchema = z.object({
       semiMajorAxisAu: z.number().nullable().optional(),
     }),
   ),
+  /** Tables of adopted values, once there are any, and how many of the stars rest on each. */
+  adopted: z
+    .array(
+      z.object({
+        quantity: z.enum(['age', 'distance']),
+        table: z.number(),
+        stars: z.number(),
+      }),
+    )
+    .optional(),
   leftOut: z.array(z.object({ name: z.string(), survey: z.string(), reason: z.string() })),
 });
 export type RunInputs = z.infer<typeof runInputsSchema>;

@@ -5,6 +5,7 @@ import { InputError, NotFound, TooMany } from '@/lib/errors';
 import { populationBox } from '@/lib/population';
 import { enqueueRun } from '@/lib/queue/enqueue';
 import { findEdgeOutside, findEmptySelection, type MapReach } from '@/lib/queue/preconditions';
+import { refuseUndecidedIn } from '@/lib/queue/undecided-pairs';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { idSchema } from '@/lib/schemas/common';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
@@ -117,6 +118,10 @@ async function refuseUnanswerable(
   );
   const nothing = findEmptySelection(selection.left, selection.all);
   if (nothing) throw new InputError(nothing);
+  // A selection may leave one of the two out: the run itself finds out.
+  if (!recipe.sampleId) {
+    await refuseUndecidedIn(actor.collaborationId, recipe.surveyIds, transaction);
+  }
   const population = await PopulationRow.findOne({
     where: { id: recipe.populationId, collaborationId: actor.collaborationId },
     transaction,

@@ -1,9 +1,11 @@
 import { literal, Op } from 'sequelize';
+import { logSpacedAxis } from '@/lib/numerics/grid';
 import {
   type PowerLawPopulation,
   populationWeights,
   type ShapedPopulation,
 } from '@/lib/population';
+import type { MapSettings } from '@/lib/schemas/surveys';
 import { type MapGrid, regridNodes } from '@/lib/sensitivity';
 import { CompletenessMapRow, PopulationRow } from '@/models';
 import { unpackMap } from '@/models/map-values';
@@ -76,6 +78,14 @@ function summarise(row: CompletenessMapRow, yardstick: Yardstick, grid: MapGrid)
   let probability = 0;
   for (let j = 0; j < columns; j++) probability += weights.semiMajorAxis[j] * profile[j];
   return { probability, profile };
+}
+
+/** The grid on which a survey's maps are made. */
+export function gridOfSettings({ massMjup: mass, semiMajorAxisAu: axis }: MapSettings): MapGrid {
+  return {
+    massMjup: logSpacedAxis(mass.min, mass.max, mass.count),
+    semiMajorAxisAu: logSpacedAxis(axis.min, axis.max, axis.count),
+  };
 }
 
 /** Summaries of maps by id; each map is read and averaged once per population and grid. */

@@ -166,6 +166,7 @@ function describeInputs(
     combination: describeCombination(run.recipe.combination, shared, sample.surveys.length),
     ...describeMaps(sample),
     ...(sample.selection && { sample: sample.selection }),
+    ...(sample.adopted.length > 0 && { adopted: sample.adopted }),
     stars: stack.stars,
     companions: companions.confirmed,
     undecided: companions.undecided.map((candidate) => ({ ...candidate })),

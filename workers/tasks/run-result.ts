@@ -167,6 +167,11 @@ function extraConditions({ inputs, stack, counted, output, warnings }: Parts): s
   if (mergedNames.length > 0) {
     conditions.push(`Counted with another of the same star: ${mergedNames.join(', ')}`);
   }
+  for (const { quantity, table, stars } of inputs.adopted ?? []) {
+    conditions.push(
+      `${quantity === 'age' ? 'Ages' : 'Distances'}: ${quantity}s table ${table}, which adopts one for ${stars} of these stars; else as each survey says`,
+    );
+  }
   if (inputs.leftOut.length > 0) {
     conditions.push(`Left out: ${inputs.leftOut.length} entries, each with a reason`);
   }

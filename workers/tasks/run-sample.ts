@@ -1,9 +1,11 @@
 import type { Transaction } from 'sequelize';
 import { InputError } from '@/lib/errors';
 import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
+import { refuseUndecided } from '@/lib/queue/undecided-pairs';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
+import { type AdoptedValues, applyAdopted, loadAdopted } from '@/models/adopted-values';
 import { loadRecipe, type MapRecipe } from '@/models/map-recipe';
 import { findLeftOut } from '@/models/sample-selection';
 import { openCandidates } from '@/models/star-facts';
@@ -39,6 +41,7 @@ export interface Sample {
   leftOut: RunInputs['leftOut'];
   /** The selection that the recipe names. */
   selection: Selection['words'] | null;
+  adopted: NonNullable<RunInputs['adopted']>;
 }
 
 type LoadedTarget = TargetRow & { star: StarRow };
@@ -70,12 +73,13 @@ async function loadSurveys(
   return surveys;
 }
 
-async function loadTargets(surveyIds: string[], transaction: Transaction) {
+async function loadTargets(surveyIds: string[], adopted: AdoptedValues, transaction: Transaction) {
   const targets = (await TargetRow.findAll({
     where: { surveyId: surveyIds },
     include: [{ model: StarRow, as: 'star' }, openCandidates()],
     transaction,
   })) as LoadedTarget[];
+  for (const target of targets) applyAdopted(target, adopted);
   const maps = await CompletenessMapRow.findAll({
     attributes: { exclude: ['nodeValues'] },
     where: { id: targets.flatMap(({ mapId }) => mapId ?? []) },
@@ -101,7 +105,8 @@ const byName = (a: { name: string }, b: { name: string }) =>
 /**
  * The stars that a run rests on, every star once, and the entries that it leaves out.
  *
- * @throws InputError when no star is left, or when a star that should have a map has none
+ * @throws InputError when no star is left, when a star that should have a map has none, or when two
+ *   stars may be one and nobody has decided
  */
 export async function collectSample(
   collaborationId: string,
@@ -110,8 +115,10 @@ export async function collectSample(
 ): Promise<Sample> {
   const surveys = await loadSurveys(collaborationId, surveyIds, transaction);
   const selection = sampleId ? await loadSelection(collaborationId, sampleId, transaction) : null;
+  const adopted = await loadAdopted(collaborationId, transaction);
   const { targets, mapOf, curvesOf } = await loadTargets(
     surveys.map(({ row }) => row.id),
+    adopted,
     transaction,
   );
   const ordered = surveys.flatMap(({ row }) =>
@@ -143,7 +150,25 @@ export async function collectSample(
   const nothing = findEmptySelection(stars.size, targets.length);
   if (nothing) throw new InputError(nothing);
   const ofStars = [...stars.values()].sort(byName);
-  return { surveys, stars: ofStars, leftOut, selection: selection?.words ?? null };
+  const nameOf = new Map(ofStars.map(({ starId, name }) => [starId, name]));
+  await refuseUndecided(collaborationId, nameOf, transaction);
+  return {
+    surveys,
+    stars: ofStars,
+    leftOut,
+    selection: selection?.words ?? null,
+    adopted: countAdopted(ofStars, adopted),
+  };
+}
+
+/** The tables of adopted values, and how many stars of the sample rest on each. */
+function countAdopted(stars: SampleStar[], adopted: AdoptedValues): Sample['adopted'] {
+  return (['age', 'distance'] as const).flatMap((quantity) => {
+    const table = adopted.newest[quantity];
+    if (table === null) return [];
+    const count = stars.filter(({ starId }) => adopted[quantity].has(starId)).length;
+    return [{ quantity, table, stars: count }];
+  });
 }
 
 function addEntry(stars: Map<string, SampleStar>, star: StarRow, entry: Entry): void {

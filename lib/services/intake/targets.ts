@@ -3,6 +3,8 @@ import type { Fault } from '@/lib/errors';
 import { foldName, type TargetRecord } from '@/lib/formats';
 import { ContrastCurveRow, StarRow, TargetRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
+import { proposeMatches } from '../star-sky';
+import { type FoundStar, KnownStars, noteJoined } from './known-stars';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 
 /** Columns of the target table that a file states; everything else goes into `attributes`. */
@@ -67,43 +69,22 @@ function describeRecord(record: TargetRecord): string {
   return parts.join(', ');
 }
 
-/** Stars of the collaboration, found by Gaia number first and by any of a target's names second. */
-class KnownStars {
-  private readonly byGaia = new Map<string, StarRow>();
-  private readonly byName = new Map<string, StarRow>();
-  constructor(rows: StarRow[]) {
-    for (const row of rows) this.add(row);
-  }
-  add(row: StarRow): void {
-    if (row.gaiaDr3Id) this.byGaia.set(row.gaiaDr3Id, row);
-    this.byName.set(row.foldedName, row);
-  }
-  find(record: TargetRecord): StarRow | undefined {
-    const byNumber = record.gaiaDr3Id ? this.byGaia.get(record.gaiaDr3Id) : undefined;
-    if (byNumber) return byNumber;
-    for (const name of [record.name, ...record.otherNames]) {
-      const row = this.byName.get(foldName(name));
-      if (row) return row;
-    }
-    return undefined;
-  }
-}
-
 interface Step {
   record: TargetRecord;
   target: TargetRow | undefined;
   star: StarRow | undefined;
+  /** How a star that was known from elsewhere was found. */
+  found: FoundStar | undefined;
   isUnchanged: boolean;
 }
 
 /** Matches each line to a known target and star; a star counts once, so it may not enter a survey twice. */
 export async function planTargets(context: PlanContext, records: TargetRecord[]): Promise<Plan> {
   const { survey } = context;
-  const [targets, stars] = await Promise.all([
+  const [targets, known] = await Promise.all([
     TargetRow.findAll({ where: { surveyId: survey.id } }),
-    StarRow.findAll({ where: { collaborationId: survey.collaborationId } }),
+    KnownStars.load(survey.collaborationId),
   ]);
-  const known = new KnownStars(stars);
   const byName = new Map(targets.map((row) => [row.foldedName, row]));
   const byStar = new Map(targets.map((row) => [row.starId, row]));
   const items: PlannedItem[] = [];
@@ -111,8 +92,11 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
   const steps: Step[] = [];
   const claimed = new Map<string, TargetRecord>();
   for (const record of records) {
-    const star = known.find(record);
-    const target = byName.get(foldName(record.name)) ?? (star && byStar.get(star.id));
+    const own = byName.get(foldName(record.name));
+    // A target of this survey stays with its star, also where a person parted it from another.
+    const found = own ? undefined : known.find(record);
+    const star = own ? known.ofId(own.starId) : found?.star;
+    const target = own ?? (star && byStar.get(star.id));
     const rival = star && claimed.get(star.id);
     if (rival) {
       faults.push({
@@ -133,7 +117,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
       });
     }
     const unchanged = target !== undefined && isUnchanged(target, fieldsOf(record, target));
-    steps.push({ record, target, star, isUnchanged: unchanged });
+    steps.push({ record, target, star, found, isUnchanged: unchanged });
     const outcome = target ? (unchanged ? 'unchanged' : 'replaces') : star ? 'known-star' : 'new';
     items.push({ name: record.name, outcome, summary: describeRecord(record) });
   }
@@ -145,7 +129,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
     summary: summariseItems(items, 'target'),
     needsMaps: changed.some((step) => step.target !== undefined),
     apply: async (transaction, uploadId) => {
-      for (const { record, target, star } of changed) {
+      for (const { record, target, star, found } of changed) {
         const fields = fieldsOf(record, target);
         const owner =
           star ??
@@ -158,23 +142,26 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
             },
             { transaction },
           ));
-        if (owner.gaiaDr3Id === null && record.gaiaDr3Id) {
+        if (owner.gaiaDr3Id === null && record.gaiaDr3Id && !known.ofGaia(record.gaiaDr3Id)) {
           await owner.update({ gaiaDr3Id: record.gaiaDr3Id }, { transaction });
         }
         if (target) await target.update({ ...fields, uploadId }, { transaction });
         else {
-          await TargetRow.create(
+          const created = await TargetRow.create(
             {
               ...fields,
               collaborationId: survey.collaborationId,
               surveyId: survey.id,
               starId: owner.id,
+              starEvidence: found?.evidence ?? null,
               uploadId,
             },
             { transaction },
           );
+          if (found?.through) await noteJoined(created.id, found.through, transaction);
         }
       }
+      await proposeMatches(survey.collaborationId, transaction);
       const replaced = changed.flatMap((step) => (step.target ? [step.target.id] : []));
       const curves = await ContrastCurveRow.findAll({
         where: { targetId: { [Op.in]: replaced }, replacedAt: null },

@@ -151,7 +151,8 @@ describe('sigmasApart', () => {
 
   it('knows equal values, values without errors, and values that are not there', () => {
     expect(sigmasApart(stated(24, null, null), stated(24, null, null))).toBe(0);
-    expect(sigmasApart(stated(24, null, null), stated(25, null, null))).toBe(Infinity);
+    expect(sigmasApart(stated(24, null, null), stated(25, null, null))).toBe(0);
+    expect(sigmasApart(stated(24, null, null), stated(26, null, null))).toBe(Infinity);
     expect(sigmasApart(stated(null, null, null), stated(25, null, null))).toBeNull();
     expect(worstDisagreement([stated(24, 21, 27)])).toBeNull();
   });
