@@ -9,7 +9,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import type { CandidateDetail } from '@/lib/schemas/candidates';
 import { EpochDialog } from './epoch-dialog';
 import { EpochTable } from './epoch-table';
@@ -30,7 +30,15 @@ function factsOf(candidate: CandidateDetail): Fact[] {
   return [
     {
       name: 'mass',
-      value: massMjup === null ? '–' : withErrors(massMjup, massErrorsMjup, 'MJ'),
+      value:
+        massMjup === null ? (
+          '–'
+        ) : (
+          <>
+            {withErrors(massMjup, massErrorsMjup, '')}
+            {THIN_SPACE}M<sub>J</sub>
+          </>
+        ),
     },
     {
       name: 'semi-major axis',
@@ -98,7 +106,9 @@ export function CandidateScreen({
             tone="warn"
             title={proposals === 1 ? '1 proposal waits.' : `${proposals} proposals wait.`}
           >
-            The history below names them; a verdict answers them.
+            {proposals === 1
+              ? 'The history below holds it; a verdict answers it.'
+              : 'The history below holds them; a verdict answers them.'}
           </Notice>
         </div>
       )}

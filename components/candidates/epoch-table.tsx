@@ -66,7 +66,7 @@ export function EpochTable({ candidate, onRemove }: EpochTableProps) {
           <HeadCell isNumeric>σ from background</HeadCell>
           <HeadCell>source</HeadCell>
           {candidate.can.vet && (
-            <HeadCell>
+            <HeadCell className="relative">
               <span className="sr-only">delete</span>
             </HeadCell>
           )}
@@ -103,7 +103,7 @@ export function EpochTable({ candidate, onRemove }: EpochTableProps) {
             <Cell isNumeric>{sigmaOf(candidate, one.id, 'background')}</Cell>
             <Cell>{sourceOf(one)}</Cell>
             {candidate.can.vet && (
-              <Cell>
+              <Cell className="relative">
                 <TextAction onClick={() => onRemove(one.id)}>
                   Delete<span className="sr-only"> the epoch {one.observedOn}</span>
                 </TextAction>

@@ -39,8 +39,8 @@ export function MotionSection({ candidate }: { candidate: CandidateDetail }) {
       )}
       <p className="mt-2 max-w-[72ch] text-ink3 text-note">
         The first epoch with errors is the reference, and its error counts at each other one. A
-        hypothesis is refused where chance alone would give so large a χ² in fewer than 0.27 % of
-        cases. Orbital motion is not modelled, and the proper motion counts as exact.
+        hypothesis is refused where chance alone would give so large a χ² in fewer than 0.27
+        {'\u00a0'}% of cases. Orbital motion is not modelled, and the proper motion counts as exact.
       </p>
     </>
   );

@@ -9,7 +9,7 @@ const dayOf = (moment: string) =>
 /** A value with its errors where there are any: "8.2 +2.9 −2.2 AU". */
 export function withErrors(value: number, errors: [number, number] | null, unit: string): string {
   return errors === null
-    ? `${formatPlain(value, 3)} ${unit}`
+    ? `${formatPlain(value, 3)} ${unit}`.trim()
     : formatAsymmetric(value, errors[0], errors[1], unit);
 }
 

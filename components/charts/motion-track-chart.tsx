@@ -44,6 +44,8 @@ export interface MotionTrackChartProps {
 
 const margin: Box = { left: 56, right: 16, top: 30, bottom: 48 };
 const MIN_SPAN_ARCSEC = 0.01;
+/** Nearer to the measured point, whose name says the epoch already, a second name would lie on it. */
+const NAMED_FROM_PX = 48;
 
 /** The path of a source that stands still behind its star, and where this one was seen. */
 export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps) {
@@ -66,7 +68,7 @@ export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps)
     .map((point, index) => `${index === 0 ? 'M' : 'L'}${point.x.toFixed(2)},${point.y.toFixed(2)}`)
     .join('');
   const ticks = (domain: number[], lengthPx: number) =>
-    linearTicks(Math.min(...domain), Math.max(...domain), lengthPx, 70).filter(
+    linearTicks(Math.min(...domain), Math.max(...domain), lengthPx, 54).filter(
       ({ isMajor }) => isMajor,
     );
 
@@ -140,7 +142,14 @@ export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps)
 
 /** One scale for both directions, so that angles are angles; east to the left as on the sky. */
 function scalesOf(epochs: MotionEpoch[], track: TrackPoint[], frame: Box) {
-  const places: Place[] = [...epochs, ...track];
+  // The ends of the error bars belong into the frame.
+  const ends = epochs.flatMap(({ eastArcsec, northArcsec, errorEastArcsec, errorNorthArcsec }) =>
+    [-1, 1].map((side) => ({
+      eastArcsec: eastArcsec + side * (errorEastArcsec ?? 0),
+      northArcsec: northArcsec + side * (errorNorthArcsec ?? 0),
+    })),
+  );
+  const places: Place[] = [...ends, ...track];
   const east = places.map(({ eastArcsec }) => eastArcsec);
   const north = places.map(({ northArcsec }) => northArcsec);
   const middle = (values: number[]) => (Math.min(...values) + Math.max(...values)) / 2;
@@ -175,18 +184,21 @@ function Predicted({
   frame: Box;
 }) {
   const hangsLeft = to.x + 10 + textWidth(words, 13) > frame.right;
+  const isNamed = Math.hypot(to.x - from.x, to.y - from.y) > NAMED_FROM_PX;
   return (
     <g>
       <line className="leader" x1={from.x} x2={to.x} y1={from.y} y2={to.y} />
       <circle className="saved-dot" cx={to.x} cy={to.y} r="4.5" />
-      <text
-        className="quiet page-halo"
-        x={hangsLeft ? to.x - 9 : to.x + 9}
-        y={to.y + 4}
-        textAnchor={hangsLeft ? 'end' : 'start'}
-      >
-        {words}
-      </text>
+      {isNamed && (
+        <text
+          className="quiet page-halo"
+          x={hangsLeft ? to.x - 9 : to.x + 9}
+          y={to.y + 4}
+          textAnchor={hangsLeft ? 'end' : 'start'}
+        >
+          {words}
+        </text>
+      )}
     </g>
   );
 }
