@@ -7,6 +7,10 @@ interface AxisProps {
   scale(value: number): number;
 }
 
+/** Server and browser differ in the last bit of a logarithm: what both write must not show it. */
+const rounded = (scale: (value: number) => number) => (value: number) =>
+  Math.round(100 * scale(value)) / 100;
+
 interface BottomAxisProps extends AxisProps {
   y: number;
   x0: number;
@@ -19,7 +23,8 @@ interface BottomAxisProps extends AxisProps {
 }
 
 export function BottomAxis(props: BottomAxisProps) {
-  const { ticks, scale, y, x0, x1, name, isFirstAtEdge = false, isLastAtEdge = false } = props;
+  const { ticks, y, x0, x1, name, isFirstAtEdge = false, isLastAtEdge = false } = props;
+  const scale = rounded(props.scale);
   const labelled = ticks.filter((tick) => tick.label !== undefined);
   const anchor = (tick: Tick) => {
     if (isFirstAtEdge && tick === labelled[0] && scale(tick.value) - x0 < 8) return 'start';
@@ -66,7 +71,8 @@ interface LeftAxisProps extends AxisProps {
 }
 
 export function LeftAxis(props: LeftAxisProps) {
-  const { ticks, scale, x, y0, y1, name, nameClassName = 'quiet', gridTo, hasLine = true } = props;
+  const { ticks, x, y0, y1, name, nameClassName = 'quiet', gridTo, hasLine = true } = props;
+  const scale = rounded(props.scale);
   return (
     <g>
       {gridTo !== undefined &&

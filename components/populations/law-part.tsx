@@ -74,7 +74,7 @@ export function LawPart(props: LawPartProps) {
     onSetting({ ...setting, definition: definitionOf(next) }, isSettled);
   const changePart = (part: Partial<LawParts[LawAxis]>, isSettled: boolean) =>
     change({ ...parts, [axis]: { ...parts[axis], ...part } }, isSettled);
-  const track = isRatio ? RATIO_TRACK : ([nodes[0], nodes[nodes.length - 1]] as const);
+  const track = isRatio ? RATIO_TRACK : [endOf(nodes[0]), endOf(nodes[nodes.length - 1])];
   const bounds: [number, number] = [Math.min(track[0], range[0]), Math.max(track[1], range[1])];
   const placeField = { 'broken-power-law': 'breakAt', 'log-normal': 'median' } as const;
   const hasPlace = shape.shape === 'broken-power-law' || shape.shape === 'log-normal';
@@ -172,6 +172,9 @@ export function LawPart(props: LawPartProps) {
     </BuilderPart>
   );
 }
+
+/** Server and browser differ in the last bit of a power: what both draw must not show it. */
+const endOf = (node: number) => Number(node.toPrecision(9));
 
 const placeNames = { 'broken-power-law': 'break', 'log-normal': 'median' } as const;
 
