@@ -4,6 +4,7 @@ import { AccessTokenRow, defineAccessToken } from './access-token';
 import { AnalysisRow, defineAnalysis } from './analysis';
 import { AuditEntryRow, defineAuditEntry } from './audit-entry';
 import { CollaborationRow, defineCollaboration } from './collaboration';
+import { CombinationRow, defineCombination } from './combination';
 import { CompanionRow, defineCompanion } from './companion';
 import { CompanionObservationRow, defineCompanionObservation } from './companion-observation';
 import { CompanionVerdictRow, defineCompanionVerdict } from './companion-verdict';
@@ -32,6 +33,7 @@ export {
   AnalysisRow,
   AuditEntryRow,
   CollaborationRow,
+  CombinationRow,
   CompanionObservationRow,
   CompanionRow,
   CompanionVerdictRow,
@@ -105,6 +107,7 @@ function defineModels(sequelize: Sequelize): void {
   defineAnalysis(sequelize);
   defineJob(sequelize);
   defineSample(sequelize);
+  defineCombination(sequelize);
   defineRun(sequelize);
   defineStudy(sequelize);
   defineAuditEntry(sequelize);

@@ -12,11 +12,13 @@ import { PageTitle } from '@/components/ui/page-title';
 import { TextField } from '@/components/ui/text-field';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { analysisRecipeSchema } from '@/lib/schemas/analyses';
+import type { CombinationView } from '@/lib/schemas/combinations';
 import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyList } from '@/lib/schemas/surveys';
 import { CandidateChoice } from './candidate-choice';
 import { CombinationChoice } from './combination-choice';
+import { CombinationLine, isSameCombination } from './combination-line';
 import { DetectionsChoice } from './detections-choice';
 import { Estimate } from './estimate';
 import { suggestName } from './name-words';
@@ -34,6 +36,8 @@ interface NewAnalysisProps {
   previewRun: RunView | null;
   /** Population asked for in the address. */
   wanted?: string;
+  /** Stored combination asked for in the address. */
+  stored?: CombinationView;
 }
 
 const FIRST_RATE: RateSetting = {
@@ -44,12 +48,12 @@ const FIRST_RATE: RateSetting = {
 
 /** One page, four choices with sensible defaults, and what they would give. */
 export function NewAnalysis(props: NewAnalysisProps) {
-  const { collaboration, surveys, populations, previewRun, wanted } = props;
+  const { collaboration, surveys, populations, previewRun, wanted, stored } = props;
   const router = useRouter();
   const offered = surveys.surveys.filter((survey) => !survey.isArchived);
   const ready = offered.filter((survey) => survey.maps.ready > 0);
   const [chosen, setChosen] = useState<string[]>(
-    (ready.length > 0 ? ready : offered).map((survey) => survey.id),
+    stored?.definition.surveyIds ?? (ready.length > 0 ? ready : offered).map((survey) => survey.id),
   );
   const [populationId, setPopulationId] = useState(
     (
@@ -59,7 +63,9 @@ export function NewAnalysis(props: NewAnalysisProps) {
   );
   const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
   const [candidates, setCandidates] = useState<AnalysisRecipe['candidates']>();
-  const [combination, setCombination] = useState<AnalysisRecipe['combination']>('default');
+  const [combination, setCombination] = useState<AnalysisRecipe['combination']>(
+    stored?.definition.rule ?? 'default',
+  );
   const [sampleId, setSampleId] = useState<string>();
   const [rate, setRate] = useState<RateSetting>(FIRST_RATE);
   const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
@@ -86,6 +92,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
     combination,
     zeroOutsideMaps,
     ...(sampleId && { sampleId }),
+    ...(stored && isSameCombination(stored, chosen, combination) && { combinationId: stored.id }),
     ...(candidates && detections === 'counted' && { candidates }),
   };
   const checked = analysisRecipeSchema.safeParse(recipe);
@@ -124,6 +131,12 @@ export function NewAnalysis(props: NewAnalysisProps) {
             >
               <CombinationChoice chosen={combination} onChange={setCombination} />
             </SurveyChoice>
+            {stored && (
+              <CombinationLine
+                stored={stored}
+                isUsed={isSameCombination(stored, chosen, combination)}
+              />
+            )}
             <SampleChoice
               collaboration={collaboration}
               surveyIds={chosen}
@@ -163,10 +176,12 @@ export function NewAnalysis(props: NewAnalysisProps) {
             surveys={chosenSurveys}
             needsRun={
               sampleId !== undefined ||
+              stored !== undefined ||
               (population !== undefined && !isPlainPowerLaw(population.definition))
             }
             setting={
               sampleId === undefined &&
+              stored === undefined &&
               checked.success &&
               population &&
               isPlainPowerLaw(population.definition)

@@ -52,6 +52,8 @@ export const analysisRecipeSchema = z
       .optional(),
     /** A saved selection of these surveys' stars; all of them when absent. */
     sampleId: idSchema.optional(),
+    /** A stored combination: its surveys are `surveyIds` and its rule is `combination`. */
+    combinationId: idSchema.optional(),
     /** Expected number of false detections among those counted; mean number only. */
     background: positiveSchema.max(1000).optional(),
   })

@@ -61,6 +61,17 @@ export const runInputsSchema = z.object({
       digest: z.string(),
     })
     .optional(),
+  /** The stored combination of the surveys, where the recipe names one. */
+  storedCombination: z
+    .object({
+      id: idSchema,
+      key: z.string(),
+      version: z.number(),
+      name: z.string(),
+      words: z.string(),
+      digest: z.string(),
+    })
+    .optional(),
   /** In the order of all sums: by name. */
   stars: z.array(
     z.object({

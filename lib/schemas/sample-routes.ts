@@ -1,4 +1,10 @@
 import { type ApiRoute, listOf, route, team } from './api-route';
+import {
+  combinationPreviewSchema,
+  combinationSchema,
+  createCombinationSchema,
+  previewCombinationSchema,
+} from './combinations';
 import { mapStoreSchema } from './map-states';
 import {
   createSampleSchema,
@@ -23,5 +29,17 @@ export const sampleRoutes: readonly ApiRoute[] = [
   }),
   route('get', `${team}/maps`, 'read', 'How the maps of each survey stand, and why not current', {
     answer: mapStoreSchema,
+  }),
+  route('get', `${team}/combinations`, 'read', 'Every version of every combination', {
+    answer: listOf('combinations', combinationSchema),
+  }),
+  route('post', `${team}/combinations`, 'write', 'Save several surveys as one, or a new version', {
+    body: createCombinationSchema,
+    status: 201,
+    answer: combinationSchema,
+  }),
+  route('post', `${team}/combinations/preview`, 'read', 'What a combination would hold', {
+    body: previewCombinationSchema,
+    answer: combinationPreviewSchema,
   }),
 ];

@@ -14,6 +14,7 @@ import {
 import type { RunSummary } from '@/lib/schemas/runs';
 import {
   AnalysisRow,
+  CombinationRow,
   database,
   inTransaction,
   PersonRow,
@@ -134,9 +135,33 @@ async function checkRecipe(
     transaction,
   });
   if (population === 0) throw new NotFound('population');
-  if (recipe.sampleId === undefined) return;
-  const sample = { collaborationId, id: recipe.sampleId };
-  if ((await SampleRow.count({ where: sample, transaction })) === 0) throw new NotFound('sample');
+  if (recipe.sampleId !== undefined) {
+    const sample = { collaborationId, id: recipe.sampleId };
+    if ((await SampleRow.count({ where: sample, transaction })) === 0) throw new NotFound('sample');
+  }
+  await checkStoredCombination(collaborationId, recipe, transaction);
+}
+
+/** A recipe that names a stored combination states its surveys and its rule, and no others. */
+async function checkStoredCombination(
+  collaborationId: string,
+  { combinationId: id, surveyIds, combination }: AnalysisRecipe,
+  transaction: Transaction,
+): Promise<void> {
+  if (id === undefined) return;
+  const stored = await CombinationRow.findOne({ where: { collaborationId, id }, transaction });
+  if (!stored) throw new NotFound('combination');
+  const { definition } = stored;
+  const isSame =
+    definition.rule === combination &&
+    [...definition.surveyIds].sort().join() === [...surveyIds].sort().join();
+  if (isSame) return;
+  throw new InputError({
+    code: 'inconsistent',
+    column: 'recipe.combinationId',
+    found: 'other surveys or another rule than those of the combination',
+    expected: `the surveys and the rule of C-${stored.number} version ${stored.version}`,
+  });
 }
 
 /** The next number of the collaboration, under a lock on its row. */

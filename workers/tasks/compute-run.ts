@@ -166,6 +166,7 @@ function describeInputs(
     combination: describeCombination(run.recipe.combination, shared, sample.surveys.length),
     ...describeMaps(sample),
     ...(sample.selection && { sample: sample.selection }),
+    ...(sample.combination && { storedCombination: sample.combination.words }),
     ...(sample.adopted.length > 0 && { adopted: sample.adopted }),
     stars: stack.stars,
     companions: companions.confirmed,

@@ -29,6 +29,10 @@ const sameAxes = (a: number[] | Float64Array, b: number[] | Float64Array) =>
 
 /** The grid of a run: that of its maps where they share one, else that of its first survey. */
 export function commonGrid(sample: Sample): MapGrid {
+  const choice = sample.combination?.definition.grid;
+  const chosen = choice?.choice === 'survey' && choice.surveyId;
+  const survey = sample.surveys.find(({ row }) => row.id === chosen);
+  if (survey) return survey.recipe.grid;
   const maps = sample.stars.flatMap(({ entries }) => entries.map(({ map }) => map));
   const [first] = maps;
   const isShared = maps.every(
@@ -61,19 +65,32 @@ export function ruleFor({ entries }: SampleStar, asked: AnalysisRecipe['combinat
   return entries.every(hasCurve) && isOneRecipe(entries) ? 'same-position' : 'deepest';
 }
 
-function checkRule(shared: SampleStar[], asked: AnalysisRecipe['combination']): void {
+type RuleOfStar = (star: SampleStar) => Rule | undefined;
+
+/** Stars that a stored combination gives a rule of their own; none where another rule is tried. */
+function ownRules({ combination }: Sample, asked: AnalysisRecipe['combination']): RuleOfStar {
+  if (!combination || combination.definition.rule !== asked) return () => undefined;
+  const rules = new Map(combination.definition.starRules.map(({ starId, rule }) => [starId, rule]));
+  return ({ starId }) => rules.get(starId);
+}
+
+function checkRule(
+  shared: SampleStar[],
+  asked: AnalysisRecipe['combination'],
+  ownRule: RuleOfStar,
+): void {
   if (asked === 'refuse') {
     refuse('shared-stars', shared, 'Stars in several surveys, which this analysis refuses');
   }
-  if (asked !== 'same-position') return;
+  const asking = shared.filter((star) => (ownRule(star) ?? asked) === 'same-position');
   refuse(
     'no-curve',
-    shared.filter(({ entries }) => !entries.every(hasCurve)),
+    asking.filter(({ entries }) => !entries.every(hasCurve)),
     'The rule "same position" needs a contrast curve in every survey; missing for',
   );
   refuse(
     'map-settings',
-    shared.filter(({ entries }) => !isOneRecipe(entries)),
+    asking.filter(({ entries }) => !isOneRecipe(entries)),
     'The rule "same position" needs equal map settings in all surveys; they differ for',
   );
 }
@@ -126,8 +143,11 @@ export async function combineMaps(
     sample.stars.map(({ starId, entries: [{ map }] }) => [starId, map.digest]),
   );
   const shared = sample.stars.filter(({ entries }) => entries.length > 1);
-  checkRule(shared, asked);
-  const plans = shared.map((star) => planCombination(star, ruleFor(star, asked), grid));
+  const ownRule = ownRules(sample, asked);
+  checkRule(shared, asked, ownRule);
+  const plans = shared.map((star) =>
+    planCombination(star, ownRule(star) ?? ruleFor(star, asked), grid),
+  );
   for (const { star, digest } of plans) digests.set(star.starId, digest);
   const { collaborationId } = work.attempt;
   const stored = await CompletenessMapRow.findAll({

@@ -150,6 +150,10 @@ function extraConditions({ inputs, stack, counted, output, warnings }: Parts): s
   const { shareFlaggedCooling } = stack;
   const { outside, mergedNames } = counted;
   const conditions = [...warnings];
+  if (inputs.storedCombination) {
+    const { key, version, name, words } = inputs.storedCombination;
+    conditions.push(`Combination: ${key} version ${version}, ${name}: ${words}`);
+  }
   if (inputs.sample) {
     const { key, version, name, words } = inputs.sample;
     conditions.push(`Sample: ${key} version ${version}, ${name}: ${words}`);

@@ -9,6 +9,7 @@ import { type AdoptedValues, applyAdopted, loadAdopted } from '@/models/adopted-
 import { loadRecipe, type MapRecipe } from '@/models/map-recipe';
 import { findLeftOut } from '@/models/sample-selection';
 import { openCandidates } from '@/models/star-facts';
+import { loadCombination, type StoredCombination } from './run-combination';
 import { loadSelection, type Selection } from './run-selection';
 
 /** A survey of the run with the recipe of its maps. */
@@ -41,6 +42,8 @@ export interface Sample {
   leftOut: RunInputs['leftOut'];
   /** The selection that the recipe names. */
   selection: Selection['words'] | null;
+  /** The stored combination that the recipe names. */
+  combination: StoredCombination | null;
   adopted: NonNullable<RunInputs['adopted']>;
 }
 
@@ -110,10 +113,16 @@ const byName = (a: { name: string }, b: { name: string }) =>
  */
 export async function collectSample(
   collaborationId: string,
-  { surveyIds, sampleId }: Pick<AnalysisRecipe, 'surveyIds' | 'sampleId'>,
+  recipe: Pick<AnalysisRecipe, 'surveyIds' | 'sampleId' | 'combinationId'>,
   transaction: Transaction,
 ): Promise<Sample> {
+  const { surveyIds, sampleId } = recipe;
+  const combination = await loadCombination(collaborationId, recipe, transaction);
   const surveys = await loadSurveys(collaborationId, surveyIds, transaction);
+  if (combination) {
+    const { surveyIds: order } = combination.definition;
+    surveys.sort((a, b) => order.indexOf(a.row.id) - order.indexOf(b.row.id));
+  }
   const selection = sampleId ? await loadSelection(collaborationId, sampleId, transaction) : null;
   const adopted = await loadAdopted(collaborationId, transaction);
   const { targets, mapOf, curvesOf } = await loadTargets(
@@ -157,6 +166,7 @@ export async function collectSample(
     stars: ofStars,
     leftOut,
     selection: selection?.words ?? null,
+    combination,
     adopted: countAdopted(ofStars, adopted),
   };
 }

@@ -29,6 +29,9 @@ export default async function SurveysPage({
             <>
               <LinkButton href={`/${actor.collaboration}/stars/samples`}>Samples</LinkButton>
               <LinkButton href={`/${actor.collaboration}/maps`}>Maps</LinkButton>
+              {list.surveys.length > 1 && (
+                <LinkButton href={`/${actor.collaboration}/surveys/combine`}>Combine</LinkButton>
+              )}
               {canAdd && (
                 <LinkButton
                   href={`/${actor.collaboration}/surveys/new`}

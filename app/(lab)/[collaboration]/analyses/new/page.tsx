@@ -2,6 +2,7 @@ import type { Metadata } from 'next';
 import { newestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewAnalysis } from '@/components/analyses/new-analysis';
+import { listCombinations } from '@/lib/services/combinations';
 import { listPopulations } from '@/lib/services/populations';
 import { listSurveys } from '@/lib/services/surveys';
 
@@ -15,10 +16,11 @@ export default async function NewAnalysisPage({
   searchParams: Promise<Record<string, string | undefined>>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const [surveys, { populations }, run, { population }] = await Promise.all([
+  const [surveys, { populations }, run, { combinations }, wanted] = await Promise.all([
     listSurveys(actor),
     listPopulations(actor),
     newestRun(actor),
+    listCombinations(actor),
     searchParams,
   ]);
   return (
@@ -27,7 +29,8 @@ export default async function NewAnalysisPage({
       surveys={surveys}
       populations={populations}
       previewRun={run}
-      wanted={population}
+      wanted={wanted.population}
+      stored={combinations.find(({ id }) => id === wanted.combination)}
     />
   );
 }

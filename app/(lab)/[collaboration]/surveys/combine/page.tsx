@@ -1,0 +1,28 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { CombineScreen } from '@/components/combinations/combine-screen';
+import { may } from '@/lib/access/permissions';
+import { listCombinations } from '@/lib/services/combinations';
+import { listSurveys } from '@/lib/services/surveys';
+
+export const metadata: Metadata = { title: 'Combine surveys' };
+
+export default async function CombinePage({
+  params,
+}: {
+  params: Promise<{ collaboration: string }>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const [{ surveys }, { combinations }] = await Promise.all([
+    listSurveys(actor),
+    listCombinations(actor),
+  ]);
+  return (
+    <CombineScreen
+      collaboration={actor.collaboration}
+      surveys={surveys.filter(({ isArchived }) => !isArchived)}
+      initial={combinations}
+      canCombine={may(actor, 'combine')}
+    />
+  );
+}

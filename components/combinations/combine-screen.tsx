@@ -1,0 +1,207 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import {
+  createCombination,
+  useCombinationPreview,
+  useCombinations,
+} from '@/components/hooks/use-combinations';
+import { Button } from '@/components/ui/button';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { SelectField } from '@/components/ui/select-field';
+import { TextAction } from '@/components/ui/text-action';
+import { TextField } from '@/components/ui/text-field';
+import { ruleNames } from '@/lib/schemas/combination-words';
+import {
+  type CombinationDefinition,
+  type CombinationView,
+  combinationDefinitionSchema,
+  combinationRuleSchema,
+} from '@/lib/schemas/combinations';
+import type { SurveyView } from '@/lib/schemas/surveys';
+import { CombinationReport } from './combination-report';
+import { CombinationTable } from './combination-table';
+import { OrderChoice } from './order-choice';
+import { OverlapTable } from './overlap-table';
+
+interface CombineScreenProps {
+  collaboration: string;
+  surveys: SurveyView[];
+  initial: CombinationView[];
+  canCombine: boolean;
+}
+
+/** Several surveys as one sample: order, rule for shared stars, grid, and what each survey adds. */
+export function CombineScreen({ collaboration, surveys, initial, canCombine }: CombineScreenProps) {
+  const { data: combinations = initial, mutate } = useCombinations(collaboration, initial);
+  const [draft, setDraft] = useState<CombinationDefinition>({
+    surveyIds: surveys.map(({ id }) => id),
+    rule: 'default',
+    starRules: [],
+    grid: { choice: 'common' },
+  });
+  const [open, setOpen] = useState<CombinationView>();
+  const [name, setName] = useState('');
+  const [busy, setBusy] = useState<'new' | 'version'>();
+  const [problem, setProblem] = useState<string>();
+  const checked = combinationDefinitionSchema.safeParse(draft);
+  const definition = checked.success ? checked.data : undefined;
+  const { data: preview, error, isLoading } = useCombinationPreview(collaboration, definition);
+  const change = (part: Partial<CombinationDefinition>) => setDraft({ ...draft, ...part });
+  const fault = checked.error
+    ? `${checked.error.issues[0].message}.`
+    : name.trim() === ''
+      ? 'Give it a name first.'
+      : canCombine
+        ? undefined
+        : 'A statistician, a collaborator or an owner saves combinations.';
+
+  const show = (combination: CombinationView) => {
+    setOpen(combination);
+    setDraft(combination.definition);
+    setName(combination.name);
+  };
+  const save = async (versionOf: number | undefined) => {
+    if (!definition) return;
+    setBusy(versionOf === undefined ? 'new' : 'version');
+    setProblem(undefined);
+    try {
+      const saved = await createCombination(collaboration, { name, definition, versionOf });
+      await mutate();
+      setOpen(saved);
+    } catch (reason) {
+      setProblem(sentenceOf(reason));
+    } finally {
+      setBusy(undefined);
+    }
+  };
+  const takeSurveys = (surveyIds: string[]) =>
+    change({
+      surveyIds,
+      ...(draft.grid.choice === 'survey' &&
+        !surveyIds.includes(draft.grid.surveyId) && { grid: { choice: 'common' as const } }),
+    });
+
+  return (
+    <>
+      <PageTitle
+        title="Combine surveys"
+        crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: 'Combine' }]}
+        context="A star in several surveys counts once, with one map made by the rule that you choose."
+      />
+      <div className="grid gap-x-14 gap-y-8 pb-10 xl:grid-cols-[420px_1fr]">
+        <section className="min-w-0">
+          <SectionOpener
+            number={1}
+            title="Surveys and rule"
+            context={open ? `${open.key}, version ${open.version}` : 'a new combination'}
+            tools={open && <TextAction onClick={() => setOpen(undefined)}>As a new one</TextAction>}
+          />
+          <div className="grid gap-5">
+            <OrderChoice surveys={surveys} chosen={draft.surveyIds} onChange={takeSurveys} />
+            <SelectField
+              label="A star in several surveys"
+              value={draft.rule}
+              onChange={(event) => {
+                const rule = combinationRuleSchema.parse(event.target.value);
+                change({ rule, ...(rule === 'refuse' && { starRules: [] }) });
+              }}
+              options={combinationRuleSchema.options.map((rule) => ({
+                value: rule,
+                label: ruleNames[rule],
+              }))}
+            />
+            <SelectField
+              label="Grid of masses and semi-major axes"
+              value={draft.grid.choice === 'survey' ? draft.grid.surveyId : ''}
+              onChange={({ target: { value } }) =>
+                change({
+                  grid: value === '' ? { choice: 'common' } : { choice: 'survey', surveyId: value },
+                })
+              }
+              options={[
+                { value: '', label: 'the one that all maps share, else that of the first survey' },
+                ...draft.surveyIds.map((id) => ({
+                  value: id,
+                  label: `that of ${surveys.find((survey) => survey.id === id)?.name ?? 'a deleted survey'}`,
+                })),
+              ]}
+            />
+            <TextField
+              label="Name"
+              value={name}
+              maxLength={100}
+              onChange={(event) => setName(event.target.value)}
+            />
+            {problem !== undefined && (
+              <Notice tone="bad" title="It was not saved." isAnnounced>
+                {problem}
+              </Notice>
+            )}
+            <div className="flex flex-wrap gap-2">
+              {open?.isLatest && (
+                <Button
+                  variant="primary"
+                  disabledReason={fault}
+                  isBusy={busy === 'version'}
+                  onClick={() => save(open.number)}
+                >
+                  Save version {open.version + 1} of {open.key}
+                </Button>
+              )}
+              <Button
+                variant={open?.isLatest ? 'normal' : 'primary'}
+                disabledReason={fault}
+                isBusy={busy === 'new'}
+                onClick={() => save(undefined)}
+              >
+                Save as a new combination
+              </Button>
+              {open && (
+                <LinkButton href={`/${collaboration}/analyses/new?combination=${open.id}`}>
+                  New analysis with {open.key}
+                </LinkButton>
+              )}
+            </div>
+          </div>
+        </section>
+        <div className="grid min-w-0 content-start gap-8">
+          <section className={`min-w-0 ${isLoading ? 'opacity-60' : ''}`} aria-busy={isLoading}>
+            <SectionOpener number={2} title="What each survey adds" />
+            {error !== undefined && (
+              <Notice tone="bad" title="It could not be counted.">
+                {sentenceOf(error)}
+              </Notice>
+            )}
+            {preview ? (
+              <CombinationReport preview={preview} />
+            ) : (
+              <p className="text-ink3">
+                {definition ? 'The surveys are being laid together.' : 'Choose two surveys.'}
+              </p>
+            )}
+          </section>
+          {preview && (
+            <section className="min-w-0">
+              <SectionOpener number={3} title="Overlaps" context="a rule for each star" />
+              <OverlapTable
+                preview={preview}
+                starRules={draft.starRules}
+                isFixed={draft.rule === 'refuse'}
+                onChange={(starRules) => change({ starRules })}
+              />
+            </section>
+          )}
+          <section className="min-w-0">
+            <SectionOpener number={4} title="Saved" context="a version never changes" />
+            <CombinationTable combinations={combinations} openId={open?.id} onOpen={show} />
+          </section>
+        </div>
+      </div>
+    </>
+  );
+}
