@@ -4,6 +4,7 @@ import { AccessTokenRow, defineAccessToken } from './access-token';
 import { AnalysisRow, defineAnalysis } from './analysis';
 import { AuditEntryRow, defineAuditEntry } from './audit-entry';
 import { CollaborationRow, defineCollaboration } from './collaboration';
+import { ColumnMemoryRow, defineColumnMemory } from './column-memory';
 import { CombinationRow, defineCombination } from './combination';
 import { CompanionRow, defineCompanion } from './companion';
 import { CompanionObservationRow, defineCompanionObservation } from './companion-observation';
@@ -25,6 +26,7 @@ import { defineStudy, StudyRow } from './study';
 import { defineSurvey, SurveyRow } from './survey';
 import { defineTarget, TargetRow } from './target';
 import { defineUpload, UploadRow } from './upload';
+import { defineUploadChange, UploadChangeRow } from './upload-change';
 import { AdoptedValueRow, defineValueTable, ValueTableRow } from './value-table';
 
 export {
@@ -33,6 +35,7 @@ export {
   AnalysisRow,
   AuditEntryRow,
   CollaborationRow,
+  ColumnMemoryRow,
   CombinationRow,
   CompanionObservationRow,
   CompanionRow,
@@ -53,6 +56,7 @@ export {
   StudyRow,
   SurveyRow,
   TargetRow,
+  UploadChangeRow,
   UploadRow,
   ValueTableRow,
 };
@@ -93,6 +97,8 @@ function defineModels(sequelize: Sequelize): void {
   defineAccessToken(sequelize);
   defineSurvey(sequelize);
   defineUpload(sequelize);
+  defineUploadChange(sequelize);
+  defineColumnMemory(sequelize);
   defineStar(sequelize);
   defineStarMatch(sequelize);
   defineValueTable(sequelize);

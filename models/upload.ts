@@ -25,6 +25,8 @@ export class UploadRow extends Model<
   declare uploadedBy: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare storedAt: CreationOptional<Date | null>;
+  declare withdrawnAt: CreationOptional<Date | null>;
+  declare withdrawnBy: CreationOptional<string | null>;
 }
 
 export function defineUpload(sequelize: Sequelize): void {
@@ -43,6 +45,8 @@ export function defineUpload(sequelize: Sequelize): void {
       uploadedBy: DataTypes.UUID,
       createdAt: DataTypes.DATE,
       storedAt: DataTypes.DATE,
+      withdrawnAt: DataTypes.DATE,
+      withdrawnBy: DataTypes.UUID,
     },
     {
       sequelize,

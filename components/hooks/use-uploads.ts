@@ -3,6 +3,8 @@
 import useSWR from 'swr';
 import { z } from 'zod';
 import {
+  dependentsSchema,
+  type UploadDependents,
   type UploadKindName,
   type UploadSettings,
   type UploadView,
@@ -10,7 +12,7 @@ import {
 } from '@/lib/schemas/uploads';
 import { apiPath, withQuery } from './api-path';
 import { ApiProblem, readProblem } from './api-problem';
-import { request } from './request';
+import { request, requestNothing } from './request';
 
 /** Uploads of a survey, newest first. */
 export function useUploads(collaboration: string, survey: string, fallback?: UploadView[]) {
@@ -28,15 +30,49 @@ async function digestOf(file: File): Promise<string | null> {
   return btoa(String.fromCharCode(...hash));
 }
 
+const broken = () =>
+  new ApiProblem({
+    type: 'about:blank',
+    title: 'No answer',
+    status: 0,
+    code: 'no-answer',
+    detail:
+      'The connection ended before the file was there. Nothing is stored; send it again, and it takes the place of this attempt.',
+  });
+
+/** By XMLHttpRequest, which alone tells how much of a body has gone. */
+function post(
+  path: string,
+  file: File,
+  headers: Record<string, string>,
+  onSent: (share: number) => void,
+): Promise<Response> {
+  return new Promise((resolve, reject) => {
+    const asked = new XMLHttpRequest();
+    asked.open('POST', path);
+    for (const [name, value] of Object.entries(headers)) asked.setRequestHeader(name, value);
+    asked.upload.onprogress = ({ loaded, total, lengthComputable }) => {
+      if (lengthComputable && total > 0) onSent(loaded / total);
+    };
+    asked.onload = () => resolve(new Response(asked.responseText, { status: asked.status }));
+    asked.onerror = () => reject(broken());
+    asked.onabort = () => reject(broken());
+    asked.send(file);
+  });
+}
+
 /**
- * Sends a file for reading; nothing of it is stored for the laboratory before `storeUpload`.
+ * Sends a file for reading; nothing of it is stored for the laboratory before `storeUpload`. The
+ * same file sent again takes the place of the one that waits.
  *
+ * @param onSent told the share of the file that has gone, 0 to 1
  * @throws ApiProblem with the place of each fault
  */
 export async function sendUpload(
   collaboration: string,
   file: File,
   about: { kind: UploadKindName; survey?: string; settings?: UploadSettings },
+  onSent: (share: number) => void = () => {},
 ): Promise<UploadView> {
   const path = withQuery(apiPath(collaboration, 'uploads'), {
     kind: about.kind,
@@ -45,25 +81,11 @@ export async function sendUpload(
     settings: about.settings && JSON.stringify(about.settings),
   });
   const digest = await digestOf(file);
-  let response: Response;
-  try {
-    response = await fetch(path, {
-      method: 'POST',
-      body: file,
-      headers: {
-        'content-type': 'application/octet-stream',
-        ...(digest === null ? {} : { 'repr-digest': `sha-256=:${digest}:` }),
-      },
-    });
-  } catch {
-    throw new ApiProblem({
-      type: 'about:blank',
-      title: 'No answer',
-      status: 0,
-      code: 'no-answer',
-      detail: 'The connection ended before the file was there. Nothing is stored; send it again.',
-    });
-  }
+  const headers = {
+    'content-type': 'application/octet-stream',
+    ...(digest === null ? {} : { 'repr-digest': `sha-256=:${digest}:` }),
+  };
+  const response = await post(path, file, headers, onSent);
   if (!response.ok) throw await readProblem(response);
   return uploadSchema.parse(await response.json());
 }
@@ -81,4 +103,21 @@ export function changeUpload(
 
 export function storeUpload(collaboration: string, id: string): Promise<UploadView> {
   return request(apiPath(collaboration, 'uploads', id, 'store'), uploadSchema, { method: 'POST' });
+}
+
+/** What a stored file carries; asked for anew each time it is shown. */
+export function readDependents(collaboration: string, id: string): Promise<UploadDependents> {
+  return request(apiPath(collaboration, 'uploads', id, 'dependents'), dependentsSchema);
+}
+
+export function withdrawUpload(collaboration: string, id: string): Promise<UploadView> {
+  return request(apiPath(collaboration, 'uploads', id, 'withdraw'), uploadSchema, {
+    method: 'POST',
+  });
+}
+
+export function forgetMapping(collaboration: string, survey: string, id: string): Promise<void> {
+  return requestNothing(apiPath(collaboration, 'surveys', survey, 'column-mappings', id), {
+    method: 'DELETE',
+  });
 }

@@ -125,10 +125,15 @@ interface FileCheckProps {
 /** One file: what each column was read as, every fault with its place, and what would be stored. */
 export function FileCheck({ entry, onSettings, onStore, onDrop, onForget }: FileCheckProps) {
   const headingId = useId();
-  const { upload, problem, settings, kind } = entry;
+  const { upload, problem, settings, kind, sent = 0 } = entry;
+  const isOnItsWay = entry.state === 'reading' && upload === null && sent < 1;
   const state = states[entry.state];
   const report = upload?.report;
   const columns = report?.columns ?? problem?.refused?.columns ?? [];
+  // Where the person has mapped nothing, what was remembered holds.
+  const columnMap =
+    settings.columnMap ?? upload?.settings.columnMap ?? problem?.refused?.remembered?.columnMap;
+  const mapped = { ...settings, columnMap };
   const remembered = report?.remembered ?? problem?.refused?.remembered ?? null;
   const canAct = entry.state === 'read' || entry.state === 'refused';
   const leaveOut = (target: string) =>
@@ -140,7 +145,16 @@ export function FileCheck({ entry, onSettings, onStore, onDrop, onForget }: File
         <h3 id={headingId} className="font-semibold text-[16px] break-all">
           {entry.file.name}
         </h3>
-        <StateMark kind={state.kind}>{state.words}</StateMark>
+        <StateMark kind={state.kind}>
+          {isOnItsWay ? `sending, ${Math.floor(100 * sent)}\u202f%` : state.words}
+        </StateMark>
+        {isOnItsWay && (
+          <progress
+            className="h-1.5 w-40 accent-act"
+            value={sent}
+            aria-label={`Sending ${entry.file.name}`}
+          />
+        )}
         {report && (
           <span className="text-[14px] text-ink3">
             {report.summary}; {describeContainer(report)}
@@ -236,7 +250,7 @@ export function FileCheck({ entry, onSettings, onStore, onDrop, onForget }: File
       {columns.length > 0 && (
         <FileColumns
           columns={columns}
-          settings={settings}
+          settings={mapped}
           isRemembered={remembered !== null}
           canChange={canAct}
           onSettings={onSettings}

@@ -4,7 +4,12 @@ import Link from 'next/link';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { useCoolingTables, useSurvey } from '@/components/hooks/use-surveys';
-import { sendUpload, storeUpload } from '@/components/hooks/use-uploads';
+import {
+  changeUpload,
+  forgetMapping,
+  sendUpload,
+  storeUpload,
+} from '@/components/hooks/use-uploads';
 import { Button } from '@/components/ui/button';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { FileDrop } from '@/components/ui/file-drop';
@@ -42,13 +47,18 @@ export function ImportScreen({
     setEntries((all) => all.map((entry) => (entry.key === key ? { ...entry, ...part } : entry)));
 
   const read = async (entry: IncomingEntry) => {
-    change(entry.key, { state: 'reading', problem: null, failure: null, settings: entry.settings });
+    const { settings } = entry;
+    change(entry.key, { state: 'reading', sent: 0, problem: null, failure: null, settings });
+    const about = {
+      kind: entry.kind,
+      survey: entry.kind === 'cooling-tables' ? undefined : survey.slug,
+      settings,
+    };
     try {
-      const upload = await sendUpload(collaboration, entry.file, {
-        kind: entry.kind,
-        survey: entry.kind === 'cooling-tables' ? undefined : survey.slug,
-        settings: entry.settings,
-      });
+      // What the server has is read again there.
+      const upload = entry.upload
+        ? await changeUpload(collaboration, entry.upload.id, settings)
+        : await sendUpload(collaboration, entry.file, about, (sent) => change(entry.key, { sent }));
       change(entry.key, { state: 'read', upload });
     } catch (reason) {
       const problem = reason instanceof ApiProblem ? reason : null;
@@ -58,6 +68,15 @@ export function ImportScreen({
         problem,
         failure: problem ? null : sentenceOf(reason),
       });
+    }
+  };
+
+  const forget = async (entry: IncomingEntry, id: string) => {
+    try {
+      await forgetMapping(collaboration, survey.slug, id);
+      await read(entry);
+    } catch (reason) {
+      change(entry.key, { failure: sentenceOf(reason) });
     }
   };
 
@@ -164,6 +183,7 @@ export function ImportScreen({
                 key={entry.key}
                 entry={entry}
                 onSettings={(settings) => void read({ ...entry, settings })}
+                onForget={(id) => void forget(entry, id)}
                 onStore={() => void store(entry)}
                 onDrop={() => setEntries((all) => all.filter((other) => other.key !== entry.key))}
               />

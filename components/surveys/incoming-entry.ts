@@ -7,6 +7,8 @@ export interface IncomingEntry {
   file: File;
   kind: UploadKindName;
   settings: UploadSettings;
+  /** Share of the file that has gone to the server, 0 to 1. */
+  sent?: number;
   state: 'reading' | 'read' | 'refused' | 'storing' | 'stored';
   upload: UploadView | null;
   problem: ApiProblem | null;

@@ -229,7 +229,19 @@ export function SurveyScreen(props: SurveyScreenProps) {
                   id: 'files',
                   label: 'Files',
                   count: uploads.length,
-                  content: <UploadList collaboration={collaboration} uploads={uploads} />,
+                  content: (
+                    <UploadList
+                      collaboration={collaboration}
+                      survey={survey.slug}
+                      uploads={uploads}
+                      canWithdraw={survey.can.import}
+                      onChanged={() => {
+                        void mutate();
+                        void mutateTargets();
+                        router.refresh();
+                      }}
+                    />
+                  ),
                 },
               ]}
             />

@@ -57,7 +57,13 @@ import {
   targetSchema,
   updateSurveySchema,
 } from './surveys';
-import { uploadQuerySchema, uploadSchema, uploadSettingsSchema } from './uploads';
+import {
+  columnMappingSchema,
+  dependentsSchema,
+  uploadQuerySchema,
+  uploadSchema,
+  uploadSettingsSchema,
+} from './uploads';
 
 export type { ApiMethod, ApiRoute } from './api-route';
 
@@ -215,6 +221,27 @@ const surveys: ApiRoute[] = [
   route('post', `${team}/uploads/{upload}/store`, 'write', 'Store what the file holds', {
     answer: uploadSchema,
   }),
+  route('get', `${team}/uploads/{upload}/dependents`, 'read', 'What a stored file carries', {
+    answer: dependentsSchema,
+  }),
+  route('post', `${team}/uploads/{upload}/withdraw`, 'write', 'Take a stored file back', {
+    answer: uploadSchema,
+  }),
+  route(
+    'get',
+    `${team}/surveys/{survey}/column-mappings`,
+    'read',
+    'Remembered mappings of columns',
+    {
+      answer: listOf('mappings', columnMappingSchema),
+    },
+  ),
+  route(
+    'delete',
+    `${team}/surveys/{survey}/column-mappings/{mapping}`,
+    'write',
+    'Forget a mapping of columns',
+  ),
   route('get', `${team}/uploads/{upload}/file`, 'read', 'The original bytes', { files: bytes }),
   route('get', `${team}/cooling-tables`, 'read', 'Cooling tables', {
     answer: listOf('coolingTables', coolingTableSchema),

@@ -118,11 +118,50 @@ export const uploadSchema = z.object({
   fileName: z.string(),
   byteLength: z.number(),
   sha256: z.string(),
-  state: z.enum(['read', 'stored']),
+  state: z.enum(['read', 'stored', 'withdrawn']),
   settings: uploadSettingsSchema,
   report: uploadReportSchema,
   uploadedBy: z.string().nullable(),
   createdAt: moment,
   storedAt: moment.nullable(),
+  /** The how-manieth file of its kind that the survey stored. */
+  version: z.number().int().positive().nullable(),
+  withdrawnBy: z.string().nullable(),
+  withdrawnAt: moment.nullable(),
 });
 export type UploadView = z.infer<typeof uploadSchema>;
+
+/** How columns of files with certain headings were mapped when one of them was stored. */
+export const columnMappingSchema = z.object({
+  id: idSchema,
+  kind: uploadKindSchema,
+  headings: z.array(z.string()),
+  columnMap: z.record(z.string(), z.string()),
+  keptBy: z.string().nullable(),
+  keptAt: moment,
+});
+export type ColumnMapping = z.infer<typeof columnMappingSchema>;
+
+const someNames = z.object({ count: z.number(), names: z.array(z.string()) });
+
+/** What a stored file carries, and what withdrawing it would do. */
+export const dependentsSchema = z.object({
+  /** Targets that would be left out: no other file had listed them before. */
+  targetsLeftOut: someNames,
+  /** Targets, curves, maps and companions that go back to what stood before this file. */
+  goBack: someNames,
+  /** Curves, maps and companions that end, with nothing before them. */
+  end: someNames,
+  /** What a later file or a person has decided since, and what stays as it is. */
+  stay: someNames,
+  /** Finished runs that read the survey after this file was stored and count one of its stars. */
+  runs: z.array(
+    z.object({
+      analysis: z.number(),
+      name: z.string(),
+      run: z.number(),
+      finishedAt: moment,
+    }),
+  ),
+});
+export type UploadDependents = z.infer<typeof dependentsSchema>;

@@ -1,16 +1,18 @@
 import type { Actor } from '@/lib/access/actor';
 import { InputError, NotFound } from '@/lib/errors';
-import type { KnownMap, ReadContext, ReadResult, UploadKind } from '@/lib/formats';
+import type { KnownMap, Note, ReadContext, ReadResult, UploadKind } from '@/lib/formats';
 import type { UploadReport, UploadSettings } from '@/lib/schemas/uploads';
 import { BUILT_IN_LAW_BANDS } from '@/lib/sensitivity';
 import { CompletenessMapRow, CoolingTableRow, type SurveyRow, TargetRow } from '@/models';
 import { unpackMap } from '@/models/map-values';
+import { recallMapping } from './column-memory';
 import { planCompanions } from './intake/companions';
 import { planCompletenessMaps } from './intake/completeness-maps';
 import { planContrastCurves } from './intake/contrast-curves';
 import { planCoolingTable } from './intake/cooling-table';
 import type { Plan } from './intake/plan';
 import { planSystems } from './intake/systems';
+import { takeBackWithdrawn } from './intake/take-back';
 import { planTargets } from './intake/targets';
 import { readOnThread } from './reading';
 
@@ -104,6 +106,33 @@ async function planOf(
 export interface DryRun {
   plan: Plan;
   report: UploadReport;
+  /** Those of the person, and what was remembered of a file with the same headings. */
+  settings: UploadSettings;
+}
+
+interface Reading {
+  read: ReadResult;
+  source: Source;
+  remembered: { id: string; columnMap: Record<string, string> } | null;
+}
+
+/** Where the person has mapped nothing, the mapping of the last file with these headings holds. */
+async function readAsBefore(source: Source, bytes: Buffer): Promise<Reading> {
+  const read = await readOnThread(bytes, await contextOf(source));
+  const isOwn = source.settings.columnMap !== undefined;
+  const remembered = isOwn ? null : await recallMapping(source.survey, source.kind, read.columns);
+  if (!remembered) return { read, source, remembered };
+  const settings = { ...source.settings, columnMap: remembered.columnMap };
+  const mapped = { ...source, settings };
+  return { read: await readOnThread(bytes, await contextOf(mapped)), source: mapped, remembered };
+}
+
+function describeMapping(columnMap: Record<string, string>): Note {
+  const words = Object.entries(columnMap).map(([heading, readAs]) =>
+    readAs === '' ? `"${heading}" left out` : `"${heading}" as ${readAs}`,
+  );
+  const message = `Mapped as last time for these headings: ${words.join(', ')}`;
+  return { code: 'columns-as-before', level: 'information', message };
 }
 
 /**
@@ -111,8 +140,8 @@ export interface DryRun {
  *
  * @throws InputError with every fault and its place
  */
-export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promise<DryRun> {
-  const read = await readOnThread(bytes, await contextOf(source));
+export async function dryRun(actor: Actor, given: Source, bytes: Buffer): Promise<DryRun> {
+  const { read, source, remembered } = await readAsBefore(given, bytes);
   if (!read.ok) {
     const faults = read.faults.map((fault) => ({ file: source.fileName, ...fault }));
     // A file that is too large as a whole; an array that is too large inside one has its place.
@@ -121,14 +150,20 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
     );
     const status = isTooLarge ? 413 : 422;
     const { columns, excerpts, offending } = read;
-    const refused = { columns, excerpts, offending, remembered: null };
+    const refused = { columns, excerpts, offending, remembered };
     throw new InputError(faults, { status, count: read.faultCount, refused });
   }
-  const plan = await planOf(actor, source, read);
+  const planned = await planOf(actor, source, read);
+  const { survey } = source;
+  const isList = survey !== null && source.kind === 'targets';
+  const plan = isList ? await takeBackWithdrawn(planned, survey) : planned;
   if (plan.faults.length > 0) {
     throw new InputError(
       plan.faults.slice(0, 100).map((fault) => ({ file: source.fileName, ...fault })),
-      { count: plan.faults.length },
+      {
+        count: plan.faults.length,
+        refused: { columns: read.columns, excerpts: [], offending: null, remembered },
+      },
     );
   }
   const report: UploadReport = {
@@ -137,7 +172,12 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
     preview: read.preview,
     rows: read.rowCount,
     columns: read.columns,
-    notes: [...read.notes, ...plan.notes],
+    remembered: remembered && { id: remembered.id },
+    notes: [
+      ...(remembered ? [describeMapping(remembered.columnMap)] : []),
+      ...read.notes,
+      ...plan.notes,
+    ],
     faults: [],
     faultCount: 0,
     items: [
@@ -150,5 +190,5 @@ export async function dryRun(actor: Actor, source: Source, bytes: Buffer): Promi
     ],
     summary: plan.summary,
   };
-  return { plan, report };
+  return { plan, report, settings: source.settings };
 }

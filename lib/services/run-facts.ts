@@ -32,7 +32,7 @@ const IS_COUNTED = `t.left_out_reason is null
 
 /**
  * Whether the surveys have changed since a run read them: other stars, another map of a star that
- * one survey lists, or a target, curve, map or companion that came later.
+ * one survey lists, a target, curve, map or companion that came later, or a file withdrawn since.
  */
 const OLDER_INPUTS = `
   r.result is not null and (
@@ -44,6 +44,9 @@ const OLDER_INPUTS = `
       where t.survey_id = any(q.survey_ids) and t.left_out_reason is null
         and greatest(t.created_at, m.created_at, c.created_at, c.replaced_at, k.created_at)
           > j.started_at)
+    or exists (
+      select 1 from upload u
+      where u.survey_id = any(q.survey_ids) and u.withdrawn_at > j.started_at)
     or exists (
       select t.star_id from target t
       where t.survey_id = any(q.survey_ids) and t.map_id is not null and ${IS_COUNTED}

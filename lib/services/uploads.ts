@@ -1,5 +1,5 @@
 import { readFile } from 'node:fs/promises';
-import { UniqueConstraintError } from 'sequelize';
+import { Op, type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, InputError, NotFound } from '@/lib/errors';
@@ -12,16 +12,20 @@ import {
   type UploadView,
   uploadSettingsSchema,
 } from '@/lib/schemas/uploads';
-import { inTransaction, PersonRow, SurveyRow, UploadRow } from '@/models';
+import { database, inTransaction, PersonRow, SurveyRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
+import { keepMapping } from './column-memory';
 import { dryRun, type Source } from './dry-run';
 import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
+import { noteChanges, takeStanding } from './intake/changes';
 import { findSurvey, isLead } from './surveys';
 
-async function describeUpload(row: UploadRow): Promise<UploadView> {
-  const [survey, person] = await Promise.all([
+export async function describeUpload(row: UploadRow): Promise<UploadView> {
+  const [survey, person, withdrawer, version] = await Promise.all([
     row.surveyId ? SurveyRow.findByPk(row.surveyId) : null,
     row.uploadedBy ? PersonRow.findByPk(row.uploadedBy) : null,
+    row.withdrawnBy ? PersonRow.findByPk(row.withdrawnBy) : null,
+    versionOf(row),
   ]);
   return {
     id: row.id,
@@ -36,7 +40,16 @@ async function describeUpload(row: UploadRow): Promise<UploadView> {
     uploadedBy: person?.name ?? null,
     createdAt: row.createdAt.toISOString(),
     storedAt: row.storedAt?.toISOString() ?? null,
+    version,
+    withdrawnBy: withdrawer?.name ?? null,
+    withdrawnAt: row.withdrawnAt?.toISOString() ?? null,
   };
+}
+
+/** The how-manieth file of its kind that the survey stored; null for one that is not stored. */
+async function versionOf({ surveyId, kind, storedAt }: UploadRow): Promise<number | null> {
+  if (!surveyId || !storedAt) return null;
+  return UploadRow.count({ where: { surveyId, kind, storedAt: { [Op.lte]: storedAt } } });
 }
 
 /** Looked at before storing and not after. */
@@ -109,33 +122,51 @@ export async function receiveUpload(
   };
   const file: IncomingFile = await receiveFile(request);
   try {
-    const { report } = await dryRun(actor, source, await readFile(file.path));
-    const row = await inTransaction(async (transaction) => {
-      const created = await UploadRow.create(
-        {
-          collaborationId: actor.collaborationId,
-          surveyId: survey?.id ?? null,
-          kind: query.kind,
-          fileName: query.name,
-          byteLength: file.byteLength,
-          sha256: file.sha256,
-          state: 'read',
-          settings: source.settings,
-          report: report as unknown as Record<string, unknown>,
-          uploadedBy: actor.personId,
-        },
-        { transaction },
-      );
-      await storeParts(created.id, file, transaction);
-      return created;
-    });
+    const { report, settings } = await dryRun(actor, source, await readFile(file.path));
+    const row = await inTransaction((transaction) =>
+      keepFile(actor, { ...source, settings }, file, report, transaction),
+    );
     return await describeUpload(row);
   } finally {
     await file.discard();
   }
 }
 
-async function findUpload(
+/**
+ * The upload of these bytes: the one that is there already, where the same file was sent for the
+ * same survey and kind and waits to be stored, else a new one.
+ */
+async function keepFile(
+  actor: Actor,
+  { kind, survey, fileName, settings }: Source,
+  { sha256, byteLength, ...file }: IncomingFile,
+  report: UploadReport,
+  transaction: Transaction,
+): Promise<UploadRow> {
+  const place = {
+    collaborationId: actor.collaborationId,
+    surveyId: survey?.id ?? null,
+    kind,
+    sha256,
+    state: 'read',
+  };
+  const said = { fileName, settings, report: report as unknown as Record<string, unknown> };
+  // One after the other: two that come at once would both find no upload.
+  await database().query('select pg_advisory_xact_lock(hashtextextended($1, 0))', {
+    bind: [`${place.collaborationId} ${place.surveyId} ${kind} ${sha256}`],
+    transaction,
+  });
+  const there = await UploadRow.findOne({ where: place, transaction });
+  if (there) return there.update(said, { transaction });
+  const created = await UploadRow.create(
+    { ...place, ...said, byteLength, uploadedBy: actor.personId },
+    { transaction },
+  );
+  await storeParts(created.id, { sha256, byteLength, ...file }, transaction);
+  return created;
+}
+
+export async function findUpload(
   actor: Actor,
   id: string,
 ): Promise<{ row: UploadRow; survey: SurveyRow | null }> {
@@ -174,7 +205,7 @@ export async function getUploadBytes(actor: Actor, id: string) {
   return { bytes: await loadParts(row.id), fileName: row.fileName, sha256: row.sha256 };
 }
 
-function demandImport(actor: Actor, { kind }: UploadRow, survey: SurveyRow | null): void {
+export function demandImport(actor: Actor, { kind }: UploadRow, survey: SurveyRow | null): void {
   if (survey) demand(actor, 'import', { isLead: isLead(actor, survey) });
   else if (kind === 'systems') demand(actor, 'save-population', { isOwn: true });
   else demand(actor, 'import-cooling-table');
@@ -188,11 +219,15 @@ export async function changeUpload(
 ): Promise<UploadView> {
   const { row, survey } = await findUpload(actor, id);
   demandImport(actor, row, survey);
-  if (row.state === 'stored')
+  if (row.state !== 'read')
     throw new Conflict('This file is stored already; upload it again to change how it is read');
   const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
-  const { report } = await dryRun(actor, source, await loadParts(row.id));
-  await row.update({ settings, report: report as unknown as Record<string, unknown> });
+  const read = await dryRun(actor, source, await loadParts(row.id));
+  const { report } = read;
+  await row.update({
+    settings: read.settings,
+    report: report as unknown as Record<string, unknown>,
+  });
   return describeUpload(row);
 }
 
@@ -201,6 +236,8 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
   const { row, survey } = await findUpload(actor, id);
   demandImport(actor, row, survey);
   if (row.state === 'stored') return describeUpload(row);
+  if (row.state === 'withdrawn')
+    throw new Conflict('This file was withdrawn; upload it again to bring it back');
   const source: Source = {
     kind: row.kind as UploadKind,
     fileName: row.fileName,
@@ -219,7 +256,17 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
         { where: { id: row.id, state: 'read' }, transaction },
       );
       if (claimed === 0) return;
+      const standing = survey && (await takeStanding(survey, transaction));
       await plan.apply(transaction, row.id);
+      if (survey && standing) {
+        await noteChanges(survey, row, standing, transaction);
+        const file = {
+          kind: row.kind,
+          columns: report.columns,
+          columnMap: source.settings.columnMap,
+        };
+        await keepMapping(actor, survey, file, transaction);
+      }
       if (plan.needsMaps && survey) {
         await enqueueMaps(transaction, {
           collaborationId: actor.collaborationId,
