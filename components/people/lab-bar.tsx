@@ -92,6 +92,7 @@ export function LabBar({ me, current, theme }: LabBarProps) {
             Overview
           </NavLink>
           <NavLink href={`${base}/surveys`}>Surveys</NavLink>
+          <NavLink href={`${base}/stars`}>Stars</NavLink>
           <NavLink href={`${base}/populations`}>Populations</NavLink>
           <NavLink href={`${base}/analyses`}>Analyses</NavLink>
           <NavLink href={`${base}/forecasts`}>Forecasts</NavLink>

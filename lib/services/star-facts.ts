@@ -40,6 +40,7 @@ export interface Sky {
   adopted: AdoptedValues;
   /** Open pairs per star. */
   undecidedOf: Map<string, number>;
+  openPairs: number;
 }
 
 export async function loadSky(collaborationId: string, starId?: string): Promise<Sky> {
@@ -74,7 +75,13 @@ export async function loadSky(collaborationId: string, starId?: string): Promise
   for (const pair of open) {
     for (const id of [pair.one, pair.other]) undecidedOf.set(id, (undecidedOf.get(id) ?? 0) + 1);
   }
-  return { stars: stars.filter(({ id }) => entriesOf.has(id)), entriesOf, adopted, undecidedOf };
+  return {
+    stars: stars.filter(({ id }) => entriesOf.has(id)),
+    entriesOf,
+    adopted,
+    undecidedOf,
+    openPairs: open.length,
+  };
 }
 
 export function ageOf(row: AgeValue): AgeValue | null {

@@ -138,7 +138,7 @@ export async function listStars(actor: Actor, query: StarQuery): Promise<StarLis
       stars: sky.stars.length,
       entries: entries.reduce((sum, rows) => sum + rows.length, 0),
       shared: entries.filter((rows) => rows.length > 1).length,
-      undecided: sky.undecidedOf.size,
+      undecided: sky.openPairs,
       ageConflicts: conflicts.filter(({ age }) => age).length,
       distanceConflicts: conflicts.filter(({ distance }) => distance).length,
     },

@@ -12,7 +12,7 @@ import { CompletenessMapRow, inTransaction } from '@/models';
 import { digestOf } from '@/models/digest';
 import { mapOfRow } from '@/models/map-on-grid';
 import { mapInputs } from '@/models/map-recipe';
-import { buildStarInputs } from '@/models/star-inputs';
+import { buildStarInputs, type OwnCurve } from '@/models/star-inputs';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import type { Work } from '../perform';
@@ -121,8 +121,16 @@ function planCombination(star: SampleStar, rule: Rule, grid: MapGrid): Combinati
   return { star, digest: digestOf(inputs), inputs: { ...inputs, star: star.name }, rule };
 }
 
-export const ownCurves = ({ entries }: Pick<SampleStar, 'entries'>) =>
-  entries.flatMap(({ target, curves }) => curves.map((curve) => ({ target, curve })));
+/** Curves of all entries; one that two surveys list to the last digit is one observation. */
+export function ownCurves({ entries }: Pick<SampleStar, 'entries'>): OwnCurve[] {
+  const own = new Map<string, OwnCurve>();
+  for (const { target, curves } of entries) {
+    for (const curve of curves) {
+      if (!own.has(curve.digest)) own.set(curve.digest, { target, curve });
+    }
+  }
+  return [...own.values()];
+}
 export const jointInputs = (star: SampleStar) =>
   buildStarInputs(star.entries[0].target, ownCurves(star));
 

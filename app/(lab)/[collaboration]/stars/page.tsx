@@ -1,0 +1,32 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { StarsScreen } from '@/components/stars/stars-screen';
+import { PageTitle } from '@/components/ui/page-title';
+import { listStars } from '@/lib/services/stars';
+import { listSurveys } from '@/lib/services/surveys';
+
+export const metadata: Metadata = { title: 'Stars' };
+
+export default async function StarsPage({
+  params,
+}: {
+  params: Promise<{ collaboration: string }>;
+}) {
+  const actor = await currentActor((await params).collaboration);
+  const [stars, { surveys }] = await Promise.all([
+    listStars(actor, { limit: 100, offset: 0 }),
+    listSurveys(actor),
+  ]);
+  return (
+    <>
+      <PageTitle
+        title="Stars"
+        context={
+          stars.counts.stars > 0 &&
+          `${stars.counts.entries} entries, ${stars.counts.stars} stars, ${stars.counts.shared} of them in several surveys`
+        }
+      />
+      <StarsScreen collaboration={actor.collaboration} initial={stars} surveys={surveys} />
+    </>
+  );
+}

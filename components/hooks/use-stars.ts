@@ -1,0 +1,84 @@
+'use client';
+
+import useSWR from 'swr';
+import {
+  type Adoption,
+  type Overlaps,
+  overlapsSchema,
+  proposedSchema,
+  type StarList,
+  type StarPage,
+  starListSchema,
+  starPageSchema,
+} from '@/lib/schemas/stars';
+import { apiPath, withQuery } from './api-path';
+import { request } from './request';
+
+export interface StarFilter {
+  q?: string;
+  survey?: string;
+  only?: string;
+  offset: number;
+  limit: number;
+}
+
+/** A page of stars; the former one stays while the next is on its way. */
+export function useStars(collaboration: string, filter: StarFilter, fallback?: StarList) {
+  return useSWR(
+    withQuery(apiPath(collaboration, 'stars'), { ...filter }),
+    (path) => request(path, starListSchema),
+    { fallbackData: fallback, keepPreviousData: true, revalidateOnFocus: false },
+  );
+}
+
+export function useStar(collaboration: string, id: string, fallback: StarPage) {
+  return useSWR(
+    apiPath(collaboration, 'stars', id),
+    (path) => request(path, starPageSchema),
+    // Maps follow an adopted value after some time.
+    {
+      fallbackData: fallback,
+      refreshInterval: (star = fallback) =>
+        star.entries.some(({ mapState }) => mapState === 'waiting') ? 1500 : 0,
+    },
+  );
+}
+
+export function useOverlaps(collaboration: string, fallback: Overlaps) {
+  return useSWR(
+    apiPath(collaboration, 'stars', 'overlaps'),
+    (path) => request(path, overlapsSchema),
+    { fallbackData: fallback },
+  );
+}
+
+export type Verdict = 'confirm' | 'refuse' | 'undo';
+
+export function decidePair(
+  collaboration: string,
+  pair: string,
+  verdict: Verdict,
+  why: string,
+): Promise<Overlaps> {
+  const path = apiPath(collaboration, 'stars', 'overlaps', pair, verdict);
+  return request(path, overlapsSchema, { method: 'POST', body: { why } });
+}
+
+export async function proposePairs(collaboration: string): Promise<number> {
+  const path = apiPath(collaboration, 'stars', 'overlaps');
+  return (await request(path, proposedSchema, { method: 'POST' })).proposed;
+}
+
+export function adoptValue(collaboration: string, star: string, body: Adoption): Promise<StarPage> {
+  const path = apiPath(collaboration, 'stars', star, 'adopt');
+  return request(path, starPageSchema, { method: 'POST', body });
+}
+
+export function splitStar(
+  collaboration: string,
+  star: string,
+  body: { targetId: string; why: string },
+): Promise<StarPage> {
+  const path = apiPath(collaboration, 'stars', star, 'split');
+  return request(path, starPageSchema, { method: 'POST', body });
+}

@@ -1,0 +1,71 @@
+'use client';
+
+import { type ReactNode, useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { Button } from '@/components/ui/button';
+import { Dialog } from '@/components/ui/dialog';
+import { Notice } from '@/components/ui/notice';
+import { TextField } from '@/components/ui/text-field';
+
+interface ReasonDialogProps {
+  title: string;
+  /** What follows from it. */
+  children: ReactNode;
+  action: string;
+  onClose(): void;
+  /** Does it; a refusal is shown. */
+  onDecide(why: string): Promise<void>;
+}
+
+/** Asks for the reason of a decision that others will read. */
+export function ReasonDialog({ title, children, action, onClose, onDecide }: ReasonDialogProps) {
+  const [why, setWhy] = useState('');
+  const [isBusy, setBusy] = useState(false);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const decide = async () => {
+    setBusy(true);
+    setRefusal(null);
+    try {
+      await onDecide(why.trim());
+      onClose();
+    } catch (failure) {
+      setRefusal(sentenceOf(failure));
+      setBusy(false);
+    }
+  };
+  return (
+    <Dialog
+      isOpen
+      onClose={onClose}
+      title={title}
+      actions={
+        <>
+          <Button
+            variant="primary"
+            isBusy={isBusy}
+            disabledReason={
+              why.trim() === '' ? 'State the reason; it is kept in the log' : undefined
+            }
+            onClick={() => void decide()}
+          >
+            {action}
+          </Button>
+          <Button onClick={onClose}>Cancel</Button>
+        </>
+      }
+    >
+      <div className="mb-3 text-ink2">{children}</div>
+      <TextField
+        label="Reason"
+        value={why}
+        maxLength={300}
+        onChange={(event) => setWhy(event.target.value)}
+      />
+      {refusal !== null && (
+        <div className="mt-3">
+          <Notice tone="bad" title={refusal} isAnnounced />
+        </div>
+      )}
+    </Dialog>
+  );
+}

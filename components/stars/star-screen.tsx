@@ -1,0 +1,190 @@
+'use client';
+
+import Link from 'next/link';
+import { useMemo } from 'react';
+import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
+import { ContrastChart } from '@/components/charts/contrast-chart';
+import { RampKey } from '@/components/charts/ramp-key';
+import { decidePair, useStar } from '@/components/hooks/use-stars';
+import { useMap } from '@/components/hooks/use-surveys';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { formatPlain } from '@/lib/quantities/display';
+import type { StarEntry, StarPage } from '@/lib/schemas/stars';
+import { PairCard } from './pair-card';
+import { StarEntries } from './star-entries';
+import { ValueChoice } from './value-choice';
+
+function EntryMap({ collaboration, entry }: { collaboration: string; entry: StarEntry }) {
+  const { data } = useMap(collaboration, entry.mapId);
+  const map = useMemo(
+    () =>
+      data && {
+        massMjup: Float64Array.from(data.massMjup),
+        semiMajorAxisAu: Float64Array.from(data.semiMajorAxisAu),
+        completeness: Float64Array.from(data.completeness.flat()),
+      },
+    [data],
+  );
+  return (
+    <div className="min-w-0">
+      <h3 className="mb-1 font-semibold">{entry.survey.name}</h3>
+      {map ? (
+        <CompletenessMapChart
+          map={map}
+          subject={`detection probability of ${entry.name} in ${entry.survey.name}`}
+          detections={[]}
+        />
+      ) : (
+        <p className="py-2 text-ink3 text-note">
+          {entry.mapFault ?? (entry.mapState === 'none' ? 'No map.' : 'The map is on its way.')}
+        </p>
+      )}
+    </div>
+  );
+}
+
+function Analyses({ collaboration, star }: { collaboration: string; star: StarPage }) {
+  if (star.analyses.length === 0) return <p className="py-2 text-ink3">No run counts it yet.</p>;
+  return (
+    <Table caption={`Analyses that count ${star.name}`}>
+      <TableHead>
+        <tr>
+          <HeadCell>analysis</HeadCell>
+          <HeadCell isNumeric>newest run with it</HeadCell>
+          <HeadCell isNumeric>detection probability</HeadCell>
+          <HeadCell isNumeric>of the sum</HeadCell>
+        </tr>
+      </TableHead>
+      <TableBody>
+        {star.analyses.map((one) => (
+          <Row key={one.key}>
+            <Cell isRowHead>
+              <Link href={`/${collaboration}/analyses/${one.key}`}>
+                {one.key} {one.name}
+              </Link>
+            </Cell>
+            <Cell isNumeric>{one.run}</Cell>
+            <Cell isNumeric>{`${Math.round(100 * one.probability)}\u2009%`}</Cell>
+            <Cell isNumeric>{`${formatPlain(100 * one.share, 2)}\u2009%`}</Cell>
+          </Row>
+        ))}
+      </TableBody>
+    </Table>
+  );
+}
+
+/** One star: what every survey knows of it, and what rests on it. */
+export function StarScreen({
+  collaboration,
+  initial,
+}: {
+  collaboration: string;
+  initial: StarPage;
+}) {
+  const { data: star = initial, mutate } = useStar(collaboration, initial.id, initial);
+  const replace = (next: StarPage) => void mutate(next, { revalidate: false });
+  const curves = useMemo(
+    () =>
+      star.curves.map((curve) => ({
+        name: [curve.survey, curve.band, curve.epoch].filter(Boolean).join(' '),
+        separationArcsec: Float64Array.from(curve.separationArcsec),
+        contrastMag: Float64Array.from(curve.contrastMag),
+      })),
+    [star.curves],
+  );
+  const sigmas = new Set(star.curves.map(({ nSigma }) => nSigma));
+  const names = [star.gaiaDr3Id && `Gaia DR3 ${star.gaiaDr3Id}`, ...star.otherNames];
+  return (
+    <>
+      <PageTitle
+        title={star.name}
+        crumbs={[{ href: `/${collaboration}/stars`, label: 'Stars' }, { label: star.name }]}
+        context={names.filter(Boolean).join(', ') || undefined}
+      />
+      <section className="mb-9">
+        <SectionOpener
+          title="Entries"
+          context={
+            star.entries.length === 1 ? 'one survey' : `${star.entries.length} surveys, one star`
+          }
+        />
+        <StarEntries collaboration={collaboration} star={star} onChanged={replace} />
+      </section>
+      <section className="mb-9 grid gap-x-10 gap-y-6 xl:grid-cols-2">
+        {(['age', 'distance'] as const).map((quantity) => (
+          <ValueChoice
+            key={quantity}
+            collaboration={collaboration}
+            star={star}
+            quantity={quantity}
+            canAdopt={star.can.adopt}
+            onChanged={replace}
+          />
+        ))}
+      </section>
+      {curves.length > 0 && (
+        <section className="mb-9 max-w-[760px]">
+          <SectionOpener
+            title="Contrast curves"
+            context={curves.map(({ name }) => name).join(', ')}
+          />
+          <ContrastChart curves={curves} nSigma={sigmas.size === 1 ? [...sigmas][0] : undefined} />
+        </section>
+      )}
+      <section className="mb-9">
+        <SectionOpener title="Completeness maps" context="one a survey" />
+        <div className="grid gap-x-10 gap-y-6 md:grid-cols-2 xl:grid-cols-3">
+          {star.entries.map((entry) => (
+            <EntryMap key={entry.targetId} collaboration={collaboration} entry={entry} />
+          ))}
+        </div>
+        <RampKey label="detection probability" />
+      </section>
+      <section className="mb-9">
+        <SectionOpener title="Companions and candidates" context={`${star.companions.length}`} />
+        <ul className="divide-y divide-rule">
+          {star.companions.map((one) => (
+            <li key={one.id} className="py-1.5">
+              <b>{one.name}</b>, {one.status}, {one.survey}
+              {one.massMjup !== null && (
+                <>
+                  , {formatPlain(one.massMjup, 3)}
+                  {'\u00a0'}
+                  <i>M</i>
+                  <sub>J</sub>
+                </>
+              )}
+              {one.semiMajorAxisAu !== null && ` at ${formatPlain(one.semiMajorAxisAu, 3)}\u00a0AU`}
+            </li>
+          ))}
+        </ul>
+        {star.companions.length === 0 && <p className="py-2 text-ink3">None is known.</p>}
+      </section>
+      <section className="mb-9">
+        <SectionOpener title="Analyses" context="that count this star" />
+        <Analyses collaboration={collaboration} star={star} />
+      </section>
+      {star.matches.length > 0 && (
+        <section>
+          <SectionOpener title="Pairs" context="with stars that may be the same" />
+          <ul>
+            {star.matches.map((pair) => (
+              <PairCard
+                key={pair.id}
+                collaboration={collaboration}
+                pair={pair}
+                canDecide={star.can.combine}
+                onDecide={async (verdict, why) => {
+                  await decidePair(collaboration, pair.id, verdict, why);
+                  await mutate();
+                }}
+              />
+            ))}
+          </ul>
+        </section>
+      )}
+    </>
+  );
+}

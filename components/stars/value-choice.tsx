@@ -1,0 +1,105 @@
+'use client';
+
+import { useState } from 'react';
+import { adoptValue } from '@/components/hooks/use-stars';
+import { TextAction } from '@/components/ui/text-action';
+import type { AdoptedQuantity, Adoption, StarPage, StarView } from '@/lib/schemas/stars';
+import { ReasonDialog } from './reason-dialog';
+import { ageWords, conflictWords, distanceWords } from './star-words';
+
+interface ValueChoiceProps {
+  collaboration: string;
+  star: StarView;
+  quantity: AdoptedQuantity;
+  canAdopt: boolean;
+  onChanged(star: StarPage): void;
+}
+
+type Asked = { words: string; choice: Adoption['choice'] };
+
+/** What each survey says of one quantity, what maps rest on, and the choice between them. */
+export function ValueChoice(props: ValueChoiceProps) {
+  const { collaboration, star, quantity, canAdopt, onChanged } = props;
+  const [asked, setAsked] = useState<Asked | null>(null);
+  const held = star[quantity];
+  const wordsOf = (entry: Pick<StarView['entries'][0], 'age' | 'distance'>) => {
+    if (quantity === 'age') return entry.age && ageWords(entry.age);
+    return entry.distance && distanceWords(entry.distance);
+  };
+  const conflict = conflictWords(star.conflicts[quantity]);
+  const isAdopted = held?.source.kind === 'adopted';
+  return (
+    <div className="min-w-0">
+      <p className="mb-1 font-semibold capitalize">
+        {quantity}
+        {conflict !== null && (
+          <span
+            className={`ml-2 font-normal normal-case text-note ${isAdopted ? 'text-ink3' : 'text-warn'}`}
+          >
+            surveys are {conflict}
+          </span>
+        )}
+      </p>
+      <ul className="text-note">
+        {star.entries.map((entry) => {
+          const words = wordsOf(entry);
+          return (
+            <li key={entry.targetId} className="flex flex-wrap gap-x-3 border-rule border-b py-1.5">
+              <span className="min-w-[9ch] text-ink3">{entry.survey.name}</span>
+              <span className="flex-1 whitespace-nowrap">{words ?? 'not given'}</span>
+              {entry.reference !== null && <span className="text-ink3">{entry.reference}</span>}
+              {canAdopt && words && (
+                <TextAction
+                  onClick={() =>
+                    setAsked({
+                      words: `${words}, from ${entry.survey.name}`,
+                      choice: { kind: 'entry', targetId: entry.targetId },
+                    })
+                  }
+                >
+                  Adopt
+                  <span className="sr-only">
+                    {' '}
+                    {words} of {entry.survey.name}
+                  </span>
+                </TextAction>
+              )}
+            </li>
+          );
+        })}
+        <li className="flex flex-wrap gap-x-3 py-1.5">
+          <span className="min-w-[9ch] text-ink3">used</span>
+          <b className="flex-1 whitespace-nowrap">
+            {held
+              ? wordsOf({ age: star.age?.value ?? null, distance: star.distance?.value ?? null })
+              : 'none'}
+          </b>
+          {held && <span className="text-ink3">{held.source.words}</span>}
+          {canAdopt && isAdopted && (
+            <TextAction
+              onClick={() =>
+                setAsked({ words: 'each survey’s own value', choice: { kind: 'none' } })
+              }
+            >
+              Take back
+            </TextAction>
+          )}
+        </li>
+      </ul>
+      {asked && (
+        <ReasonDialog
+          title={`Use ${asked.words}?`}
+          action={`Make a new ${quantity}s table`}
+          onClose={() => setAsked(null)}
+          onDecide={async (why) => {
+            const body = { quantity, choice: asked.choice, why } as Adoption;
+            onChanged(await adoptValue(collaboration, star.id, body));
+          }}
+        >
+          It holds for all entries of {star.name}; their maps are made anew. Runs that are there
+          keep the table that they used.
+        </ReasonDialog>
+      )}
+    </div>
+  );
+}
