@@ -6,6 +6,7 @@ import {
   Model,
   type Sequelize,
 } from 'sequelize';
+import type { StartCondition } from '@/lib/schemas/cooling';
 
 /** Absolute magnitude against companion mass and age; missing entries are null. */
 export class CoolingTableRow extends Model<
@@ -20,6 +21,8 @@ export class CoolingTableRow extends Model<
   declare ageMyr: number[];
   declare magnitudes: Record<string, (number | null)[]>;
   declare digest: string;
+  /** Initial entropy of what the table follows. */
+  declare startCondition: CreationOptional<StartCondition>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -34,6 +37,7 @@ export function defineCoolingTable(sequelize: Sequelize): void {
       ageMyr: DataTypes.ARRAY(DataTypes.DOUBLE),
       magnitudes: DataTypes.JSONB,
       digest: DataTypes.TEXT,
+      startCondition: { type: DataTypes.TEXT, defaultValue: 'unstated' },
       createdAt: DataTypes.DATE,
     },
     {

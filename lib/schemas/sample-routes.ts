@@ -5,6 +5,7 @@ import {
   createCombinationSchema,
   previewCombinationSchema,
 } from './combinations';
+import { coolingRelationSchema, nameStartSchema } from './cooling';
 import { mapStoreSchema } from './map-states';
 import {
   createSampleSchema,
@@ -27,6 +28,19 @@ export const sampleRoutes: readonly ApiRoute[] = [
     body: previewSampleSchema,
     answer: samplePreviewSchema,
   }),
+  route('get', `${team}/cooling-tables/{table}`, 'read', 'A cooling relation, or "built-in"', {
+    answer: coolingRelationSchema,
+  }),
+  route(
+    'patch',
+    `${team}/cooling-tables/{table}`,
+    'write',
+    'Name what a cooling table starts from',
+    {
+      body: nameStartSchema,
+      answer: coolingRelationSchema,
+    },
+  ),
   route('get', `${team}/maps`, 'read', 'How the maps of each survey stand, and why not current', {
     answer: mapStoreSchema,
   }),

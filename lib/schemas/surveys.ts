@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment, personRefSchema, slugSchema } from './common';
+import { startConditionSchema } from './cooling';
 import { jobSchema } from './jobs';
 import { mapSettingsSchema } from './sensitivity';
 
@@ -147,6 +148,7 @@ export const coolingTableSchema = z.object({
   bands: z.array(z.string()),
   massMjup: z.array(z.number()),
   ageMyr: z.array(z.number()),
+  startCondition: startConditionSchema,
   digest: z.string(),
   createdAt: moment,
 });

@@ -16,6 +16,7 @@ export async function listCoolingTables(actor: Actor): Promise<CoolingTableView[
     bands: Object.keys(row.magnitudes),
     massMjup: row.massMjup,
     ageMyr: row.ageMyr,
+    startCondition: row.startCondition,
     digest: row.digest,
     createdAt: row.createdAt.toISOString(),
   }));

@@ -10,6 +10,7 @@ import {
   spectralClasses,
 } from '@/lib/schemas/samples';
 import { SurveyRow, TargetRow } from '@/models';
+import { applyAdopted, loadAdopted } from '@/models/adopted-values';
 import { findLeftOut, gatherStarFacts, type StarFacts } from '@/models/sample-selection';
 import { checkSurveys, surveyNames } from './samples';
 
@@ -46,6 +47,8 @@ export async function readEntries(actor: Actor, surveyIds?: readonly string[]) {
   });
   const ids = surveys.map(({ id }) => id);
   const targets = await TargetRow.findAll({ attributes: COLUMNS, where: { surveyId: ids } });
+  const adopted = await loadAdopted(actor.collaborationId);
+  for (const target of targets) applyAdopted(target, adopted);
   const place = new Map(ids.map((id, i) => [id, i]));
   const placeOf = (target: TargetRow) => place.get(target.surveyId) as number;
   return { surveys, targets: targets.sort((a, b) => placeOf(a) - placeOf(b)) };

@@ -29,6 +29,7 @@ export default async function SurveysPage({
             <>
               <LinkButton href={`/${actor.collaboration}/stars/samples`}>Samples</LinkButton>
               <LinkButton href={`/${actor.collaboration}/maps`}>Maps</LinkButton>
+              <LinkButton href={`/${actor.collaboration}/cooling`}>Cooling</LinkButton>
               {list.surveys.length > 1 && (
                 <LinkButton href={`/${actor.collaboration}/surveys/combine`}>Combine</LinkButton>
               )}

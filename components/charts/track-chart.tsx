@@ -1,0 +1,133 @@
+'use client';
+
+import { scaleLinear, scaleLog } from 'd3';
+import { formatPlain } from '@/lib/quantities/display';
+import { BottomAxis, LeftAxis } from './axes';
+import { ChartFigure, type ChartTable } from './chart-figure';
+import { linePath } from './paths';
+import { linearTicks, logTicks } from './ticks';
+import { useWidth } from './use-width';
+
+export interface Track {
+  massMjup: number;
+  /** Magnitude, or a difference of magnitudes, shape [age]; NaN where there is none. */
+  values: Float64Array;
+}
+
+export interface TrackChartProps {
+  /** What is drawn: "absolute magnitude in H". */
+  subject: string;
+  /** Increasing [Myr]. */
+  ageMyr: Float64Array;
+  tracks: Track[];
+  /** Magnitudes grow downwards; differences grow upwards, with a line at zero. */
+  isDifference?: boolean;
+  height?: number;
+}
+
+const margin = { left: 46, right: 62, top: 26, bottom: 46 };
+
+/** One line a mass against age, named at its end. */
+export function TrackChart(props: TrackChartProps) {
+  const { subject, ageMyr, tracks, isDifference = false, height = 340 } = props;
+  const [measure, width] = useWidth<HTMLDivElement>(620);
+  const [left, right] = [margin.left, width - margin.right];
+  const bottom = height - margin.bottom;
+  const all = tracks.flatMap(({ values }) => [...values].filter(Number.isFinite));
+  const ends: [number, number] = isDifference
+    ? [Math.min(-0.1, ...all), Math.max(0.1, ...all)]
+    : [Math.min(...all), Math.max(...all)];
+  const [first, last] = [ageMyr[0], ageMyr[ageMyr.length - 1]];
+  const x = scaleLog([first, last], [left, right]);
+  const y = scaleLinear(ends, isDifference ? [bottom, margin.top] : [margin.top, bottom]);
+  const names = placeNames(tracks, ageMyr, x, y);
+  return (
+    <ChartFigure
+      label={trackSentence(props, ends)}
+      width={width}
+      height={height}
+      measure={measure}
+      tables={() => [trackTable(props)]}
+    >
+      <text className="quiet" x={0} y={12}>
+        {subject}
+      </text>
+      <LeftAxis
+        ticks={linearTicks(...ends, bottom - margin.top, 40).filter(({ isMajor }) => isMajor)}
+        scale={y}
+        x={left}
+        y0={bottom}
+        y1={margin.top}
+        gridTo={right}
+        hasLine={false}
+      />
+      {isDifference && (
+        <line className="alternative-line" x1={left} x2={right} y1={y(0)} y2={y(0)} />
+      )}
+      {tracks.map(({ massMjup, values }) => (
+        <path
+          key={massMjup}
+          d={linePath(ageMyr, values, x, y)}
+          fill="none"
+          stroke="var(--data)"
+          strokeWidth={1.4}
+        />
+      ))}
+      {names.map((name) => (
+        <text key={name.text} className="page-halo" x={name.x + 5} y={name.y + 4}>
+          {name.text}
+        </text>
+      ))}
+      <BottomAxis
+        ticks={logTicks(first, last, right - left)}
+        scale={x}
+        y={bottom}
+        x0={left}
+        x1={right}
+        name="age, Myr"
+      />
+    </ChartFigure>
+  );
+}
+
+/** Names at the ends of the lines; one that would lie on another is left out. */
+function placeNames(
+  tracks: Track[],
+  ageMyr: Float64Array,
+  x: (age: number) => number,
+  y: (value: number) => number,
+) {
+  const placed: { text: string; x: number; y: number }[] = [];
+  const unit = ' MJ';
+  for (const { massMjup, values } of [...tracks].reverse()) {
+    let end = values.length - 1;
+    while (end >= 0 && !Number.isFinite(values[end])) end--;
+    if (end < 0) continue;
+    const name = {
+      text: `${formatPlain(massMjup)}${placed.length === 0 ? unit : ''}`,
+      x: x(ageMyr[end]),
+      y: y(values[end]),
+    };
+    if (placed.every((other) => Math.hypot(other.x - name.x, other.y - name.y) > 14)) {
+      placed.push(name);
+    }
+  }
+  return placed;
+}
+
+function trackSentence({ subject, ageMyr, tracks }: TrackChartProps, ends: [number, number]) {
+  const ages = `${formatPlain(ageMyr[0])} to ${formatPlain(ageMyr[ageMyr.length - 1])} Myr`;
+  return `${subject} against age, ${ages}, for ${tracks.length} masses from ${formatPlain(tracks[0]?.massMjup ?? 0)} to ${formatPlain(tracks.at(-1)?.massMjup ?? 0)} Jupiter masses: from ${ends[0].toFixed(1)} to ${ends[1].toFixed(1)} mag`;
+}
+
+function trackTable({ subject, ageMyr, tracks }: TrackChartProps): ChartTable {
+  const cell = (value: number) => (Number.isFinite(value) ? value.toFixed(2) : '–');
+  return {
+    caption: subject,
+    columns: ['age, Myr', ...tracks.map(({ massMjup }) => `${formatPlain(massMjup)} MJ`)],
+    rows: [...ageMyr].map((age, i) => [
+      formatPlain(age, 3),
+      ...tracks.map(({ values }) => cell(values[i])),
+    ]),
+  };
+}

@@ -1,0 +1,30 @@
+'use client';
+
+import useSWR from 'swr';
+import {
+  type CoolingRelationView,
+  coolingRelationSchema,
+  type StartCondition,
+} from '@/lib/schemas/cooling';
+import { apiPath } from './api-path';
+import { request } from './request';
+
+/** A cooling relation with its numbers. */
+export function useCoolingRelation(collaboration: string, id: string | undefined) {
+  return useSWR<CoolingRelationView>(
+    id === undefined ? null : apiPath(collaboration, 'cooling-tables', id),
+    (path: string) => request(path, coolingRelationSchema),
+    { revalidateOnFocus: false, keepPreviousData: false },
+  );
+}
+
+export function nameStart(
+  collaboration: string,
+  id: string,
+  startCondition: StartCondition,
+): Promise<CoolingRelationView> {
+  return request(apiPath(collaboration, 'cooling-tables', id), coolingRelationSchema, {
+    method: 'PATCH',
+    body: { startCondition },
+  });
+}
