@@ -13,9 +13,15 @@ import type { EccentricityLaw } from './types';
 /** Columns are worked on in blocks of so many. */
 const BLOCK = 8;
 
-/** The block of memory with the table that lies in it. */
+let chosen: Kernels | null = null;
+/** Chosen with the first map: whoever computes none compiles nothing. */
+function kernelsHere(): Kernels {
+  chosen ??= compiledKernels() ?? plainKernels();
+  return chosen;
+}
+
+/** The table that lies at the beginning of the kernels' memory. */
 interface Workspace {
-  kernels: Kernels;
   law: string;
   firstLogAxis: number;
   axisStep: number;
@@ -24,7 +30,6 @@ interface Workspace {
 }
 
 const workspace: Workspace = {
-  kernels: compiledKernels() ?? plainKernels(),
   law: '',
   firstLogAxis: 0,
   axisStep: 0,
@@ -47,7 +52,7 @@ export function levelMap(
   law: EccentricityLaw,
   logAxis: Float64Array,
 ): Float64Array {
-  const { kernels } = workspace;
+  const kernels = kernelsHere();
   const columns = logAxis.length;
   const { cellMag, begins } = inputs.paths;
   const masses = begins.length - 1;
@@ -116,7 +121,7 @@ function phasesFor(
     workspace.stride === stride;
   if (isKnown) return workspace.phases;
   const phases = separationPhases(law, logAxis[0], axisStep, stride);
-  workspace.kernels.reserve(phases.planes.length).set(phases.planes);
+  kernelsHere().reserve(phases.planes.length).set(phases.planes);
   Object.assign(workspace, { law: key, firstLogAxis: logAxis[0], axisStep, stride, phases });
   return phases;
 }

@@ -36,13 +36,27 @@ function bytesOf(base64: string): Uint8Array {
   return bytes;
 }
 
-/** The kernels as compiled, on two doubles at a time; null where the machine has no such orders. */
+/** The module, or null where a page's content security policy lets nothing be compiled. */
+function compile(wasm: Wasm, bytes: Uint8Array): object | null {
+  try {
+    return new wasm.Module(bytes);
+  } catch {
+    // The bytes are valid: what is left is the page's refusal, and the plain kernels give the same.
+    return null;
+  }
+}
+
+/**
+ * The kernels as compiled, on two doubles at a time; null where the machine has no such orders or
+ * the page lets nothing be compiled.
+ */
 export function compiledKernels(): Kernels | null {
   const wasm = (globalThis as unknown as { WebAssembly?: Wasm }).WebAssembly;
   const bytes = bytesOf(COMPILED_KERNELS);
-  if (!wasm?.validate(bytes)) return null;
+  const module = wasm?.validate(bytes) ? compile(wasm, bytes) : null;
+  if (!wasm || module === null) return null;
   const memory = new wasm.Memory({ initial: FIRST_PAGES });
-  const instance = new wasm.Instance(new wasm.Module(bytes), { env: { memory } });
+  const instance = new wasm.Instance(module, { env: { memory } });
   const { addRow, addLongRow, convolve, multiplyPair } = instance.exports;
   let view = new Float64Array(memory.buffer);
   return {
