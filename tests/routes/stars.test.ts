@@ -119,6 +119,15 @@ const mapsAreReady = () =>
     return open === 0;
   });
 
+const list = async (search: string) => {
+  const response = await call(listStars, {
+    params: { collaboration: collaboration.slug },
+    headers,
+    path: `/?${search}`,
+  });
+  return starListSchema.parse(await response.json());
+};
+
 describe('pairs that may be one star', () => {
   it('are proposed by place after proper motion, once, with their evidence', async () => {
     const response = await call(propose, {
@@ -232,14 +241,7 @@ describe('adopted ages', () => {
     const digestOf = new Map(maps.map(({ id, digest }) => [id, digest]));
     return targets.map(({ mapId }) => digestOf.get(mapId ?? ''));
   };
-  const findStar2 = async () => {
-    const response = await call(listStars, {
-      params: { collaboration: collaboration.slug },
-      headers,
-      path: '/?q=star2',
-    });
-    return starListSchema.parse(await response.json());
-  };
+  const findStar2 = () => list('q=star2');
 
   it('make a numbered table, new maps and other conditions; taking them back gives the old maps', async () => {
     const star = await StarRow.findOne({ where: { name: 'Star 2' }, rejectOnEmpty: true });
@@ -295,37 +297,7 @@ describe('adopted ages', () => {
   });
 });
 
-describe('a survey that was copied', () => {
-  it.each(['default', 'deepest'] as const)(
-    'leaves the limit as it was, rule "%s"',
-    async (combination) => {
-      const copy = await buildSurvey(collaboration.id, { name: `Copy, ${combination}` });
-      for (let i = 1; i <= 3; i++) await buildTarget(copy, { name: `Star ${i}` });
-      await untilEnded(await askForMaps(copy));
-      const limitOf = async (surveys: SurveyRow[]) => {
-        const recipe = recipeOf(surveys, population, { combination });
-        const { number } = await buildAnalysis(collaboration.id, recipe, owner.personId);
-        const { run } = await runToEnd(owner, `A-${number}`);
-        return [run.result?.stars, run.result?.answer.limit, run.result?.entries];
-      };
-      const [stars, limit] = await limitOf([first]);
-      // Alpha is in the first survey only; the other three are in both.
-      expect(await limitOf([first, copy])).toEqual([stars, limit, 7]);
-      await query('delete from survey where id = $1', [copy.id]);
-    },
-  );
-});
-
 describe('the list of stars', () => {
-  const list = async (search: string) => {
-    const response = await call(listStars, {
-      params: { collaboration: collaboration.slug },
-      headers,
-      path: `/?${search}`,
-    });
-    return starListSchema.parse(await response.json());
-  };
-
   it('counts each star once, filters by survey and overlap, and pages', async () => {
     const { counts, total, stars } = await list('limit=2&offset=1');
     expect([counts.stars, counts.entries, counts.shared, total]).toEqual([4, 6, 2, 4]);
