@@ -64,8 +64,12 @@ module.exports = {
     {
       name: 'components-stay-in-the-browser',
       severity: 'error',
+      comment: 'of the formats they may have the two files that only make text',
       from: { path: '^components/' },
-      to: { path: '^(lib/(config|access|queue|mail|services|formats)|models|workers)' },
+      to: {
+        path: '^(lib/(config|access|queue|mail|services|formats)|models|workers)',
+        pathNot: '^lib/formats/(write-csv|formula-guard)\\.ts$',
+      },
     },
     {
       name: 'pages-reach-rows-through-services',
@@ -77,7 +81,7 @@ module.exports = {
       name: 'launcher-before-install',
       severity: 'error',
       comment: 'it installs the packages, so it can use none',
-      from: { path: '^lib/local/.*\\.mjs$' },
+      from: { path: '^lib/local/.*\\.mjs$', pathNot: '^lib/local/compile-kernels\\.mjs$' },
       to: { pathNot: '^lib/local/.*\\.mjs$', dependencyTypesNot: ['core'] },
     },
     {

@@ -1,7 +1,19 @@
 import { scaleLinear } from 'd3';
 import type { Box } from './map-contours';
-import type { InfluenceStar } from './star-influence-chart';
 import { textWidth } from './text-width';
+
+export interface InfluenceStar {
+  name: string;
+  /** Its map averaged over the population, 0 to 1. */
+  probability: number;
+  limitWithout: number;
+  /** Limit without it over the limit with all. */
+  ratio: number;
+  /** Place of its survey in the collaboration; undefined for a star in several. */
+  seriesIndex?: number;
+  /** Counted companions. */
+  hosts: string[];
+}
 
 /** A host that moves the limit so many times further than any other star has a panel of its own. */
 const FAR = 3;

@@ -12,7 +12,12 @@ import {
 } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
-import { type InfluencePanel, influencePanels, nameHeights } from './influence-panels';
+import {
+  type InfluencePanel,
+  type InfluenceStar,
+  influencePanels,
+  nameHeights,
+} from './influence-panels';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
 import { PointReadout } from './point-readout';
@@ -20,19 +25,6 @@ import { seriesColour } from './series';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
-
-export interface InfluenceStar {
-  name: string;
-  /** Its map averaged over the population, 0 to 1. */
-  probability: number;
-  limitWithout: number;
-  /** Limit without it over the limit with all. */
-  ratio: number;
-  /** Place of its survey in the collaboration; undefined for a star in several. */
-  seriesIndex?: number;
-  /** Counted companions. */
-  hosts: string[];
-}
 
 export interface StarInfluenceChartProps {
   stars: InfluenceStar[];

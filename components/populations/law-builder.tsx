@@ -13,6 +13,7 @@ import type { ListedPopulation } from '@/lib/schemas/populations';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
 import { BuilderControls } from './builder-controls';
+import type { PopulationBuilderProps } from './builder-props';
 import {
   type BuilderSetting,
   builderFromQuery,
@@ -25,7 +26,6 @@ import { hasIndexPlane } from './limit-plane';
 import { orbitWords } from './orbit-words';
 import { PlaneSection } from './plane-section';
 import { PopulationAlone } from './population-alone';
-import type { PopulationBuilderProps } from './population-builder';
 import { PopulationPreview } from './population-preview';
 import { SavePopulation } from './save-population';
 import { spreadOf } from './spread';

@@ -2,13 +2,12 @@
 
 import { RangeControl } from '@/components/charts/range-control';
 import { EditableRange } from '@/components/runs/editable-range';
-import type { LiveSample } from '@/components/runs/live-sample';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import type { AxisConvention, AxisShape } from '@/lib/population';
 import { formatPlain } from '@/lib/quantities/display';
 import { BuilderPart } from './builder-part';
-import type { BuilderSetting } from './builder-setting';
 import { ConventionChoice } from './convention-choice';
+import type { LawPartProps } from './law-part-props';
 import {
   type AxisForm,
   axisFormOf,
@@ -21,23 +20,6 @@ import { OwnDistribution } from './own-distribution';
 import { ShapeDrawing } from './shape-drawing';
 import { ShapeNumbers } from './shape-numbers';
 import { axisNotation, RangeWords, ShapeWords, WithUnit } from './shape-words';
-
-export interface LawPartProps {
-  number: number;
-  axis: LawAxis;
-  setting: BuilderSetting;
-  parts: LawParts;
-  /** The saved parts, where the population is stored. */
-  saved?: LawParts;
-  settled: BuilderSetting;
-  sample: LiveSample | undefined;
-  /** Nodes of the maps along this axis. */
-  nodes: Float64Array;
-  /** What could be seen at each of them, averaged over the other axis. */
-  profile?: Float64Array;
-  /** `isSettled` is false while something is being dragged. */
-  onSetting(setting: BuilderSetting, isSettled: boolean): void;
-}
 
 const forms: Record<LawAxis, { value: AxisForm; label: string }[]> = {
   mass: [

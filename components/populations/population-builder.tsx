@@ -1,27 +1,13 @@
 'use client';
 
 import { useState } from 'react';
-import type { Query } from '@/components/runs/live-setting';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { PageTitle } from '@/components/ui/page-title';
-import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { PopulationBuilderProps } from './builder-props';
 import { FIRST_DEFINITION } from './builder-setting';
 import { LawBuilder } from './law-builder';
 import { SystemsScreen } from './systems-screen';
 import { SystemsUpload } from './systems-upload';
-
-export interface PopulationBuilderProps {
-  collaboration: string;
-  /** All versions, newest first; empty for a new population. */
-  versions: ListedPopulation[];
-  /** The version that is shown. */
-  version?: ListedPopulation;
-  /** Newest finished run: its maps carry the preview. */
-  previewRun: RunView | null;
-  canShare: boolean;
-  query: Query;
-}
 
 /** A population of any form: laws under their controls, systems as their table has them. */
 export function PopulationBuilder(props: PopulationBuilderProps) {

@@ -2,7 +2,7 @@
 
 import { TRACK } from '@/components/runs/tracks';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
-import type { LawPartProps } from './law-part';
+import type { LawPartProps } from './law-part-props';
 import { definitionOf, type LawParameter, readParameter, withParameter } from './law-parts';
 import { ParameterSlider } from './parameter-slider';
 

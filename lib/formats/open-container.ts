@@ -86,6 +86,9 @@ function identify(bytes: Uint8Array, options: OpenOptions): Container | null {
 
 const isText = (container: Container) => ['csv', 'ecsv', 'votable', 'json'].includes(container);
 
+/** No deflated byte becomes more than so many. */
+const mostDeflated = 1032;
+
 const tooLarge = { code: 'ERR_BUFFER_TOO_LARGE' };
 
 /** Undoes gzip, whatever is inside, within the limit of an upload: more could not be read anyway. */
@@ -93,9 +96,10 @@ export function gunzip(bytes: Uint8Array, faults: FaultReport): Uint8Array | nul
   if (bytes[0] !== 0x1f || bytes[1] !== 0x8b) return bytes;
   const most = uploadLimits.uploadBytes;
   try {
-    // The last four bytes state the length; a file that lies about it is stopped at the limit.
+    // The last four bytes state the length; one that so few bytes cannot hold is a cut file's noise.
     const end = new DataView(bytes.buffer, bytes.byteOffset + Math.max(0, bytes.length - 4));
-    if (bytes.length > 18 && end.getUint32(0, true) > most) throw tooLarge;
+    const stated = bytes.length > 18 ? end.getUint32(0, true) : 0;
+    if (stated > most && stated < mostDeflated * bytes.length) throw tooLarge;
     return new Uint8Array(gunzipSync(bytes, { maxOutputLength: most }));
   } catch (error) {
     const isLarge = error === tooLarge || (error as { code?: string }).code === tooLarge.code;

@@ -237,7 +237,8 @@ export const calibrationResultSchema = z.object({
   atTruth: z.array(
     z.object({
       rate: z.number(),
-      exact: z.number(),
+      /** Null where stars of unequal completeness leave it open by more than a hundredth. */
+      exact: z.number().nullable(),
       observed: z.number(),
       standardError: z.number(),
     }),

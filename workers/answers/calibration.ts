@@ -93,6 +93,9 @@ export interface CalibrationMergeInput {
   hasCandidates: boolean;
 }
 
+/** Bounds of the exact coverage that are closer than this are told as one number. */
+const KNOWN_WITHIN = 0.01;
+
 /** All parts put together, and what they say of the run's limits. */
 export function mergeParts(input: CalibrationMergeInput): ResultOf<'calibration'> {
   const { plan, own, other, level, levels, truthName, hasCandidates } = input;
@@ -102,10 +105,10 @@ export function mergeParts(input: CalibrationMergeInput): ResultOf<'calibration'
     notes.push('Invented surveys have confirmed companions alone: open candidates are left aside');
   }
   const atTruth = coverageAtRates(plan.own, own, level);
-  const widest = Math.max(0, ...atTruth.map(({ exact }) => exact.high - exact.low));
-  if (widest > 1e-3) {
+  if (atTruth.some(({ exact: { low, high } }) => high - low > KNOWN_WITHIN)) {
     notes.push(
-      `The exact coverage is the middle of bounds that lie at most ${widest.toPrecision(2)} apart`,
+      'At a fixed truth theory leaves the coverage open where stars differ in completeness: there ' +
+        'only the invented surveys tell it',
     );
   }
   const against = plan.other && mergeCalibration(plan.other, other, levels);
@@ -117,9 +120,9 @@ export function mergeParts(input: CalibrationMergeInput): ResultOf<'calibration'
     ranks: merged.ranks,
     coverage: merged.coverage,
     atTruth: atTruth.map(({ rate, exact: { low, high }, observed }) => {
-      // A sum of probabilities may exceed 1 by its last bit.
-      const exact = Math.min(1, 0.5 * (low + high));
-      const standardError = Math.sqrt((exact * (1 - exact)) / merged.surveys);
+      const exact = high - low > KNOWN_WITHIN ? null : 0.5 * (low + high);
+      const chance = exact ?? observed;
+      const standardError = Math.sqrt((chance * (1 - chance)) / merged.surveys);
       return { rate, exact, observed, standardError };
     }),
     medianBias: merged.medianBias,

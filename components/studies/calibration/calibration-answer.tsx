@@ -10,6 +10,7 @@ import { formatSignificant } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
 import type { AnswerProps } from '../kind-entry';
 import { biasInWords } from './calibration-words';
+import { TruthTable } from './truth-table';
 
 /** Below this chance a test speaks against the posteriors. */
 const LEAST_P = 0.001;
@@ -20,6 +21,9 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
   const isFraction = asked.quantity === 'host_fraction';
   const level = describeLevel(asked.credibleLevel);
   const rateName = isFraction ? 'true host fraction' : 'true rate, planets per 100 stars';
+  const known = result.atTruth.flatMap(({ exact, rate, ...row }) =>
+    exact === null ? [] : [{ ...row, x: rate, expected: exact }],
+  );
   return (
     <>
       <p className="mb-3.5">
@@ -80,16 +84,16 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
               level={3}
               context="need not be the level: only their average over the prior is"
             />
-            <CoverageChart
-              points={result.atTruth.map(({ exact, rate, ...row }) => ({
-                ...row,
-                x: rate,
-                expected: exact,
-              }))}
-              xName={rateName}
-              xUnit={isFraction ? '\u2009%' : ''}
-              subject={`Coverage of the ${level} limit at fixed truths`}
-            />
+            {known.length === result.atTruth.length ? (
+              <CoverageChart
+                points={known}
+                xName={rateName}
+                xUnit={isFraction ? '\u2009%' : ''}
+                subject={`Coverage of the ${level} limit at fixed truths`}
+              />
+            ) : (
+              <TruthTable rows={result.atTruth} rateName={rateName} />
+            )}
           </section>
         )}
         {result.otherTruth && (

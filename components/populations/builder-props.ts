@@ -1,0 +1,15 @@
+import type { Query } from '@/components/runs/live-setting';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { RunView } from '@/lib/schemas/runs';
+
+export interface PopulationBuilderProps {
+  collaboration: string;
+  /** All versions, newest first; empty for a new population. */
+  versions: ListedPopulation[];
+  /** The version that is shown. */
+  version?: ListedPopulation;
+  /** Newest finished run: its maps carry the preview. */
+  previewRun: RunView | null;
+  canShare: boolean;
+  query: Query;
+}

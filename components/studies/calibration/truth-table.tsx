@@ -1,0 +1,33 @@
+import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { formatPercent, formatPlain, formatSignificant } from '@/lib/quantities/display';
+import type { ResultOf } from '@/lib/schemas/study-results';
+
+/** How often the limit held at fixed truths, where theory leaves some of it open. */
+export function TruthTable({
+  rows,
+  rateName,
+}: {
+  rows: ResultOf<'calibration'>['atTruth'];
+  rateName: string;
+}) {
+  return (
+    <Table caption="How often the limit held at fixed truths">
+      <TableHead>
+        <HeadCell>{rateName}</HeadCell>
+        <HeadCell isNumeric>held in</HeadCell>
+        <HeadCell isNumeric>standard error</HeadCell>
+        <HeadCell isNumeric>theory</HeadCell>
+      </TableHead>
+      <TableBody>
+        {rows.map(({ rate, exact, observed, standardError }) => (
+          <Row key={rate}>
+            <Cell>{formatPlain(100 * rate)}</Cell>
+            <Cell isNumeric>{formatPercent(observed, 3)}</Cell>
+            <Cell isNumeric>{`${formatSignificant(100 * standardError, 2)} points`}</Cell>
+            <Cell isNumeric>{exact === null ? 'left open' : formatPercent(exact, 3)}</Cell>
+          </Row>
+        ))}
+      </TableBody>
+    </Table>
+  );
+}
