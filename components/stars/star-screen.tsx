@@ -130,7 +130,11 @@ export function StarScreen({
             title="Contrast curves"
             context={curves.map(({ name }) => name).join(', ')}
           />
-          <ContrastChart curves={curves} nSigma={sigmas.size === 1 ? [...sigmas][0] : undefined} />
+          <ContrastChart
+            curves={curves}
+            selected={curves.length === 1 ? curves[0].name : undefined}
+            nSigma={sigmas.size === 1 ? [...sigmas][0] : undefined}
+          />
         </section>
       )}
       <section className="mb-9">

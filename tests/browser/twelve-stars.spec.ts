@@ -121,6 +121,8 @@ test('twelve stars as files give the maps and limits computed outside', async ({
     mapSettings: {
       eccentricity: { law: 'beta', alpha: 0.867, beta: 3.03 },
       threshold: 'smooth',
+      // The outside values carry the error of five age nodes a side.
+      ageNodesPerSide: 5,
       massMjup: { min: 1, max: 60, count: 20 },
       semiMajorAxisAu: { min: 3, max: 600, count: 20 },
     },

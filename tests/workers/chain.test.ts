@@ -42,6 +42,8 @@ const inference = readChecks('survey-inference');
 const FULL = {
   eccentricity: { law: 'beta', alpha: 0.867, beta: 3.03 },
   threshold: 'smooth',
+  // The outside values carry the error of five age nodes a side.
+  ageNodesPerSide: 5,
   massMjup: { min: 1, max: 60, count: 20 },
   semiMajorAxisAu: { min: 3, max: 600, count: 20 },
 };

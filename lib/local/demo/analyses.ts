@@ -60,13 +60,6 @@ export async function askQuestions({
     { mass: [5, 30], axis: [20, 300] },
     false,
   );
-  const single = await makePopulation(
-    statistician,
-    'Single power laws',
-    { mass: [2, 30], axis: [20, 300] },
-    true,
-  );
-
   const broken = await createPopulation(statistician, {
     name: 'Few beyond 60 AU',
     note: 'Invented for the demonstration.',
@@ -87,6 +80,12 @@ export async function askQuestions({
       },
     },
   });
+  const single = await makePopulation(
+    statistician,
+    'Single power laws',
+    { mass: [2, 30], axis: [20, 300] },
+    true,
+  );
 
   const recipe = (population: PopulationView, ids: string[], prior: RatePriorInput = uniform) => ({
     surveyIds: ids,
