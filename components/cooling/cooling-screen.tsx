@@ -44,7 +44,7 @@ export function CoolingScreen({ collaboration, tables, canName }: CoolingScreenP
         crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: 'Cooling' }]}
         context="How bright a companion of a mass is at an age. A survey names the relation of its maps, and each map keeps which it was made with."
       />
-      <div className="grid gap-8 pb-10">
+      <div className="grid grid-cols-1 gap-8 pb-10">
         <section>
           <SectionOpener number={1} title="Relations" />
           <CoolingList tables={tables} shownId={id} builtInId={BUILT_IN} onShow={setId} />

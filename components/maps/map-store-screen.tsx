@@ -35,7 +35,7 @@ export function MapStoreScreen({ collaboration, initial }: MapStoreScreenProps) 
       {store.surveys.length === 0 ? (
         <p className="py-3 text-ink2">No survey yet.</p>
       ) : (
-        <div className="grid gap-8 pb-10">
+        <div className="grid grid-cols-1 gap-8 pb-10">
           <section>
             <SectionOpener number={1} title="Surveys" />
             <StoreTable store={store} shownSlug={shown?.slug} {...{ collaboration, setSlug }} />
