@@ -162,7 +162,10 @@ export function ImportScreen({
             <FileNeeds kind={chosen} />
             <p className="mt-3 text-ink2 text-note">
               A table of whole systems belongs to no survey: it{' '}
-              <Link href={`/${collaboration}/populations/new?from=systems`}>
+              <Link
+                className="underline underline-offset-3"
+                href={`/${collaboration}/populations/new?from=systems`}
+              >
                 becomes a population
               </Link>
               .

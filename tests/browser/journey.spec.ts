@@ -57,7 +57,7 @@ test('a statistician takes a survey from its files to an upper limit', async ({
     await expect(article.getByText('refused, nothing is stored')).toBeVisible();
     await expect(article.getByText(/line 3.*found "n\.d\."/)).toBeVisible();
     await article.getByLabel('Leave a target out').fill('RB 0002');
-    await article.getByRole('button', { name: 'Leave out' }).click();
+    await article.getByRole('button', { name: 'Leave out', exact: true }).click();
     await expect(article.getByText('ready to store')).toBeVisible();
     await article.getByRole('button', { name: 'Drop this file' }).click();
     await expect(article).toBeHidden();

@@ -99,7 +99,10 @@ function ForecastTable({
               </Cell>
               <Cell className="min-w-44">{plannedInWords(study.settings)}</Cell>
               <Cell className="whitespace-nowrap">
-                <Link href={`/${collaboration}/analyses/${study.run.analysisKey}`}>
+                <Link
+                  className="underline underline-offset-3"
+                  href={`/${collaboration}/analyses/${study.run.analysisKey}`}
+                >
                   {study.run.analysisKey}
                 </Link>
                 , run {study.run.number}
