@@ -1,3 +1,4 @@
+import { crc32 } from 'node:zlib';
 import { type Entry, fromBuffer, type ZipFile } from 'yauzl';
 import { uploadLimits } from './limits';
 import { type FaultReport, quoteFound } from './reports';
@@ -11,18 +12,6 @@ const open = (bytes: Buffer) =>
       error ? reject(error) : resolve(zip),
     );
   });
-
-/** The CRC-32 of bytes, as zip archives state it. */
-const crcTable = Uint32Array.from({ length: 256 }, (_, n) => {
-  let c = n;
-  for (let bit = 0; bit < 8; bit += 1) c = c & 1 ? 0xedb88320 ^ (c >>> 1) : c >>> 1;
-  return c;
-});
-function crc32(bytes: Uint8Array): number {
-  let c = 0xffffffff;
-  for (const byte of bytes) c = crcTable[(c ^ byte) & 255] ^ (c >>> 8);
-  return (c ^ 0xffffffff) >>> 0;
-}
 
 function inflate(zip: ZipFile, entry: Entry, budget: number): Promise<Buffer> {
   return new Promise((resolve, reject) => {
