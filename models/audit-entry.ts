@@ -20,6 +20,8 @@ export class AuditEntryRow extends Model<
   declare itemId: string;
   declare summary: CreationOptional<string>;
   declare details: CreationOptional<Record<string, unknown>>;
+  /** Where the request came from, as far as that can be believed. */
+  declare address: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -34,6 +36,7 @@ export function defineAuditEntry(sequelize: Sequelize): void {
       itemId: DataTypes.TEXT,
       summary: DataTypes.TEXT,
       details: DataTypes.JSONB,
+      address: DataTypes.TEXT,
       createdAt: DataTypes.DATE,
     },
     {

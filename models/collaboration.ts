@@ -16,6 +16,7 @@ export class CollaborationRow extends Model<
   declare slug: string;
   declare name: string;
   declare settings: CreationOptional<Record<string, unknown>>;
+  declare archivedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -26,6 +27,7 @@ export function defineCollaboration(sequelize: Sequelize): void {
       slug: DataTypes.TEXT,
       name: DataTypes.TEXT,
       settings: DataTypes.JSONB,
+      archivedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
     },
     {

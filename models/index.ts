@@ -15,6 +15,8 @@ import { CoolingTableRow, defineCoolingTable } from './cooling-table';
 import { defineInvitation, InvitationRow } from './invitation';
 import { defineJob, JobRow } from './job';
 import { defineMember, MemberRow } from './member';
+import { defineNote, NoteRow } from './note';
+import { defineOutgoingMessage, OutgoingMessageRow } from './outgoing-message';
 import { definePerson, PersonRow } from './person';
 import { definePopulation, PopulationRow } from './population';
 import { defineRun, RunRow } from './run';
@@ -46,6 +48,8 @@ export {
   InvitationRow,
   JobRow,
   MemberRow,
+  NoteRow,
+  OutgoingMessageRow,
   PersonRow,
   PopulationRow,
   RunRow,
@@ -116,6 +120,8 @@ function defineModels(sequelize: Sequelize): void {
   defineCombination(sequelize);
   defineRun(sequelize);
   defineStudy(sequelize);
+  defineNote(sequelize);
+  defineOutgoingMessage(sequelize);
   defineAuditEntry(sequelize);
   associate();
 }

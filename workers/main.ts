@@ -9,6 +9,7 @@ import { startHeart } from './heart';
 import { describeError, log } from './log';
 import { perform, type Work } from './perform';
 import { openPool } from './pool';
+import { startPost } from './post';
 import { performComputeMaps } from './tasks/compute-maps';
 import { performComputeRun } from './tasks/compute-run';
 import { performComputeStudy } from './tasks/compute-study';
@@ -57,6 +58,7 @@ async function main(): Promise<void> {
     }),
   });
   const heart = await startHeart(() => [...workerIds], `${os.hostname()}:${process.pid}`);
+  const post = startPost();
   log('info', 'worker ready', { threads: pool.threads, process: process.pid });
 
   let isStopping = false;
@@ -66,6 +68,7 @@ async function main(): Promise<void> {
     log('info', 'worker stops', { signal });
     shutdown.abort();
     await runner.stop();
+    await post.stop();
     await heart.stop();
     await pool.close();
     await closeDatabase();

@@ -27,6 +27,13 @@ interface InvitationPanelProps {
 const dayOf = (moment: string) =>
   new Date(moment).toLocaleDateString('en-GB', { day: 'numeric', month: 'long', timeZone: 'UTC' });
 
+function mailWords(mail: InvitationView['mail']) {
+  if (mail === 'failed') return <span className="block text-bad">its message did not arrive</span>;
+  return mail === 'waiting' ? (
+    <span className="block text-ink3">its message is on its way</span>
+  ) : null;
+}
+
 /** Invites by e-mail, and shows what became of earlier invitations. */
 export function InvitationPanel({ collaboration, initial, offered }: InvitationPanelProps) {
   const { data: invitations = initial, mutate } = useInvitations(collaboration, initial);
@@ -109,6 +116,7 @@ export function InvitationPanel({ collaboration, initial, offered }: InvitationP
                   {invitation.state === 'pending'
                     ? `open until ${dayOf(invitation.expiresAt)}`
                     : invitation.state}
+                  {invitation.state === 'pending' && mailWords(invitation.mail)}
                 </Cell>
                 <Cell>
                   {offered.length > 0 && ['pending', 'expired'].includes(invitation.state) && (

@@ -11,6 +11,9 @@ export interface Message {
   to: Address;
   subject: string;
   text: string;
+  html?: string;
+  /** The same at every attempt, so that a message which arrives twice is known as one. */
+  messageId?: string;
 }
 
 /** What would let a name or an address break out of its header, or reach a second mailbox. */
@@ -27,6 +30,9 @@ function checkAddress({ address }: Address): void {
 const oneLine = (text: string) => text.replace(/[\p{Cc}\u2028\u2029]+/gu, ' ').trim();
 const plainName = (text: string) => oneLine(text).replace(/["<>]/g, '');
 
+/** Of a message of the outbox. */
+export const messageIdOf = (id: string) => `<${id}@${new URL(config().webAddress).hostname}>`;
+
 export const isMailSetUp = () => config().mailUrl !== undefined;
 
 /**
@@ -35,7 +41,7 @@ export const isMailSetUp = () => config().mailUrl !== undefined;
  * @throws LabError 503 when no mail server is set up, or it does not take the message
  */
 export async function sendMail(message: Message): Promise<void> {
-  const { mailUrl, mailFrom, webAddress } = config();
+  const { mailUrl, mailFrom } = config();
   if (mailUrl === undefined) {
     throw new LabError('mail', 503, 'No mail server is set up, so no message was sent');
   }
@@ -44,6 +50,10 @@ export async function sendMail(message: Message): Promise<void> {
     from: { name: 'Rarebound', address: mailFrom },
     disableFileAccess: true,
     disableUrlAccess: true,
+    // Together shorter than the claim on a message lasts.
+    connectionTimeout: 10_000,
+    greetingTimeout: 10_000,
+    socketTimeout: 30_000,
     headers: { 'Auto-Submitted': 'auto-generated' },
   });
   try {
@@ -51,7 +61,8 @@ export async function sendMail(message: Message): Promise<void> {
       to: { name: plainName(message.to.name), address: message.to.address },
       subject: oneLine(message.subject),
       text: message.text,
-      messageId: `<${crypto.randomUUID()}@${new URL(webAddress).hostname}>`,
+      html: message.html,
+      messageId: message.messageId ?? messageIdOf(crypto.randomUUID()),
     });
   } catch (reason) {
     const error = new LabError('mail', 503, 'The mail server did not take the message');

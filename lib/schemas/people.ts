@@ -63,6 +63,8 @@ export const invitationSchema = z.object({
   createdAt: moment,
   expiresAt: moment,
   state: z.enum(['pending', 'expired', 'accepted', 'revoked']),
+  /** Whether its newest message has gone; null for one that was sent before this was noted. */
+  mail: z.enum(['waiting', 'sent', 'failed']).nullable(),
 });
 export type InvitationView = z.infer<typeof invitationSchema>;
 

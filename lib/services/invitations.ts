@@ -3,8 +3,8 @@ import { QueryTypes, type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor, KnownPerson } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { AccessError, Conflict, InputError, LabError, NotFound, NotSignedIn } from '@/lib/errors';
-import { invitationMessage } from '@/lib/mail/messages';
-import { isMailSetUp, sendMail } from '@/lib/mail/transport';
+import { queueMessage, withdrawMessages } from '@/lib/mail/outbox';
+import { isMailSetUp } from '@/lib/mail/transport';
 import { type Join, type Joined, joinedSchema } from '@/lib/schemas/account';
 import { idSchema, type Role } from '@/lib/schemas/common';
 import {
@@ -39,6 +39,7 @@ interface Listed {
   expiresAt: Date;
   acceptedAt: Date | null;
   revokedAt: Date | null;
+  mail: InvitationView['mail'];
 }
 
 function stateOf(row: Listed): InvitationView['state'] {
@@ -56,6 +57,7 @@ const toView = (row: Listed): InvitationView =>
     createdAt: row.createdAt.toISOString(),
     expiresAt: row.expiresAt.toISOString(),
     state: stateOf(row),
+    mail: row.mail,
   });
 
 async function readInvitations(
@@ -65,7 +67,11 @@ async function readInvitations(
 ): Promise<InvitationView[]> {
   const rows = await database().query<Listed>(
     `select i.id, i.email, i.roles, p.name as "invitedBy", i.created_at as "createdAt",
-            i.expires_at as "expiresAt", i.accepted_at as "acceptedAt", i.revoked_at as "revokedAt"
+            i.expires_at as "expiresAt", i.accepted_at as "acceptedAt", i.revoked_at as "revokedAt",
+            (select case when o.state = 'sending' then 'waiting' else o.state end
+               from outbox_message o
+              where o.about = 'invitation:' || i.id and o.state <> 'withdrawn'
+              order by o.created_at desc limit 1) as mail
        from invitation i left join person p on p.id = i.invited_by
       where i.collaboration_id = $1 and ($2::uuid is null or i.id = $2::uuid)
       order by i.created_at desc limit 500`,
@@ -79,38 +85,34 @@ export async function listInvitations(actor: Actor): Promise<{ invitations: Invi
   return { invitations: await readInvitations(actor, null) };
 }
 
-/** After the row is stored: if the message does not go out, the invitation is withdrawn again. */
-async function sendInvitation(actor: Actor, row: InvitationRow, code: string): Promise<void> {
-  const rows = await database().query<{ name: string }>(
+const aboutInvitation = (id: string) => `invitation:${id}`;
+
+/** The message goes out if the row is stored, and not otherwise; it takes the place of an earlier one. */
+async function queueInvitation(
+  actor: Actor,
+  row: InvitationRow,
+  code: string,
+  transaction: Transaction,
+): Promise<void> {
+  const [{ name: collaboration }] = await database().query<{ name: string }>(
     'select name from collaboration where id = $1',
-    { bind: [actor.collaborationId], type: QueryTypes.SELECT },
+    { bind: [actor.collaborationId], type: QueryTypes.SELECT, transaction },
   );
-  try {
-    await sendMail(
-      invitationMessage({
-        email: row.email,
-        code,
-        collaboration: rows[0].name,
-        roles: row.roles as Role[],
-        invitedBy: actor.personName,
-        expiresAt: row.expiresAt,
-      }),
-    );
-  } catch (reason) {
-    await inTransaction(async (transaction) => {
-      await row.update({ revokedAt: new Date() }, { transaction });
-      const item = { kind: 'invitation', id: row.id };
-      const summary = 'withdrew an invitation, because its message could not be sent';
-      await recordAudit(actor, 'revoke-invitation', item, summary, transaction);
-    });
-    const error = new LabError(
-      'mail',
-      503,
-      'The message could not be sent, so the invitation was withdrawn. Try again later.',
-    );
-    error.cause = reason;
-    throw error;
-  }
+  const about = aboutInvitation(row.id);
+  await withdrawMessages(transaction, about);
+  await queueMessage(
+    transaction,
+    'invitation',
+    { email: row.email },
+    {
+      collaboration,
+      code,
+      roles: row.roles as Role[],
+      invitedBy: actor.personName,
+      expiresAt: row.expiresAt,
+    },
+    { collaborationId: actor.collaborationId, about, uselessAfter: row.expiresAt },
+  );
 }
 
 function demandMail(): void {
@@ -162,9 +164,9 @@ export async function createInvitation(
     const item = { kind: 'invitation', id: created.id };
     const summary = `invited somebody as ${roles.join(', ')}`;
     await recordAudit(actor, 'invite', item, summary, transaction, { roles });
+    await queueInvitation(actor, created, code, transaction);
     return created;
   });
-  await sendInvitation(actor, row, code);
   return (await readInvitations(actor, row.id))[0];
 }
 
@@ -185,15 +187,14 @@ async function lockOpen(actor: Actor, id: string, transaction: Transaction) {
 /** A new message with a new code; the code of the old message stops working. */
 export async function resendInvitation(actor: Actor, id: string): Promise<InvitationView> {
   const code = newCode();
-  const row = await inTransaction(async (transaction) => {
+  await inTransaction(async (transaction) => {
     const found = await lockOpen(actor, id, transaction);
     demandMail();
     await found.update({ codeHash: hashCode(code), expiresAt: newExpiry() }, { transaction });
     const item = { kind: 'invitation', id };
     await recordAudit(actor, 'resend-invitation', item, 'sent an invitation again', transaction);
-    return found;
+    await queueInvitation(actor, found, code, transaction);
   });
-  await sendInvitation(actor, row, code);
   return (await readInvitations(actor, id))[0];
 }
 
@@ -201,6 +202,7 @@ export async function revokeInvitation(actor: Actor, id: string): Promise<void> 
   await inTransaction(async (transaction) => {
     const row = await lockOpen(actor, id, transaction);
     await row.update({ revokedAt: new Date() }, { transaction });
+    await withdrawMessages(transaction, aboutInvitation(id));
     const item = { kind: 'invitation', id };
     await recordAudit(actor, 'revoke-invitation', item, 'revoked an invitation', transaction);
   });

@@ -15,6 +15,7 @@ const { POST: resend } = await import(
 );
 const { GET: getOffer, POST: join } = await import('@/app/api/v1/join/[code]/route');
 const { GET: getMe } = await import('@/app/api/v1/me/route');
+const { sendDue } = await import('@/lib/mail/post');
 const { withDatabase } = await import('../support/database');
 const people = await import('../support/people');
 const { bearer, call, createPerson, sessionCookieOf, tokenOf, webAddress } = people;
@@ -65,8 +66,9 @@ const onInvitation = (handler: typeof revoke, method: string, invitation: string
     headers: bearer(token.owner),
   });
 
-/** The code in the newest message to an address. */
-function codeFor(email: string): string {
+/** The code in the newest message to an address, once what waits has been sent. */
+async function codeFor(email: string): Promise<string> {
+  await sendDue();
   const mail = mailbox.received.filter(({ to }) => to.includes(email)).at(-1);
   const code = /\/join\/([A-Za-z0-9_-]+)/.exec(mail?.text ?? '')?.[1];
   if (code === undefined) throw new Error(`no code was sent to ${email}`);
@@ -76,7 +78,7 @@ function codeFor(email: string): string {
 async function invited(roles: Role[] = ['student']): Promise<{ email: string; code: string }> {
   const email = newAddress();
   expect((await inviteAs('owner', email, roles)).status).toBe(201);
-  return { email, code: codeFor(email) };
+  return { email, code: await codeFor(email) };
 }
 
 const offerOf = (code: string) => call(getOffer, { params: { code } });
@@ -97,14 +99,14 @@ describe('POST …/invitations', () => {
       state: 'pending',
       invitedBy: team.people.owner.name,
     });
+    const code = await codeFor(email);
     const mail = mailbox.received.at(-1);
     expect(mail?.to).toEqual([email]);
     expect(mail?.text).toContain(
       `${team.people.owner.name} invites you to join ${team.collaboration.name} on Rarebound as statistician and author.`,
     );
-    const code = codeFor(email);
     expect(Buffer.from(code, 'base64url')).toHaveLength(32);
-    for (const table of ['invitation', 'audit_entry']) {
+    for (const table of ['invitation', 'audit_entry', 'outbox_message']) {
       expect(JSON.stringify(await query(`select * from ${table}`))).not.toContain(code);
     }
   });
@@ -125,9 +127,11 @@ describe('POST …/invitations', () => {
     [['student', 'collaborator'], 403],
     [['owner'], 403],
   ])('lets an author invite students only: %j answers %i', async (roles, status) => {
+    await sendDue();
     const before = mailbox.received.length;
     const response = await inviteAs('author', newAddress(), roles);
     expect(response.status).toBe(status);
+    await sendDue();
     expect(mailbox.received.length - before).toBe(status === 201 ? 1 : 0);
     if (status === 403) expect((await response.json()).needed).toEqual(['owner']);
   });
@@ -154,6 +158,7 @@ describe('POST …/invitations', () => {
       inviteAs('owner', email, ['student']),
     ]);
     expect(answers.map(({ status }) => status).sort()).toEqual([201, 409]);
+    await sendDue();
     expect(mailbox.received.filter(({ to }) => to.includes(email))).toHaveLength(1);
   });
 
@@ -169,20 +174,30 @@ describe('POST …/invitations', () => {
     expect(mailbox.received).toHaveLength(before);
   });
 
-  it('withdraws the invitation when its message cannot be sent', async () => {
+  it('keeps the message while the mail server is down, and says so', async () => {
     mailbox.refuse('452 no room');
     const email = newAddress();
-    const response = await inviteAs('owner', email, ['student']);
-    expect(response.status).toBe(503);
-    expect((await response.json()).detail).toBe(
-      'The message could not be sent, so the invitation was withdrawn. Try again later.',
-    );
-    const rows = await query('select 1 from invitation where email = $1 and revoked_at is null', [
-      email,
-    ]);
-    expect(rows).toEqual([]);
-    mailbox.refuse(null);
     expect((await inviteAs('owner', email, ['student'])).status).toBe(201);
+    await sendDue();
+    const state = async () => {
+      const answer = await call(list, { params: params(), headers: bearer(token.owner) });
+      const { invitations } = await answer.json();
+      return invitations.find((one: { email: string }) => one.email === email).mail;
+    };
+    expect(await state()).toBe('waiting');
+    mailbox.refuse(null);
+    await query('update outbox_message set due_at = now()');
+    expect(await codeFor(email)).toMatch(/^[A-Za-z0-9_-]{43}$/);
+    expect(await state()).toBe('sent');
+  });
+
+  it('sends nothing of an invitation that was revoked meanwhile', async () => {
+    await sendDue();
+    const email = newAddress();
+    const { id } = await (await inviteAs('owner', email, ['student'])).json();
+    expect((await onInvitation(revoke, 'DELETE', id)).status).toBe(204);
+    await sendDue();
+    expect(mailbox.received.filter(({ to }) => to.includes(email))).toEqual([]);
   });
 });
 
@@ -314,7 +329,7 @@ describe('POST …/invitations/{id}/resend', () => {
       email,
     ]);
     expect((await onInvitation(resend, 'POST', id)).status).toBe(200);
-    const renewed = codeFor(email);
+    const renewed = await codeFor(email);
     expect(renewed).not.toBe(code);
     expect((await offerOf(code)).status).toBe(404);
     expect((await offerOf(renewed)).status).toBe(200);

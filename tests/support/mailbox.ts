@@ -10,8 +10,17 @@ export interface ReceivedMail {
   text: string;
 }
 
+/** The plain part of a message that says the same in two forms. */
+function plainPart(source: string): string {
+  const boundary = /content-type: multipart\/alternative;\s+boundary="([^"]+)"/i.exec(source)?.[1];
+  if (boundary === undefined) return source;
+  const part = source.split(`--${boundary}`).find((one) => /content-type: text\/plain/i.test(one));
+  return part?.replace(/^\r\n/, '') ?? source;
+}
+
 /** Soft line ends and =XX of quoted-printable; other encodings come as they are. */
-function decodeText(source: string): string {
+function decodeText(whole: string): string {
+  const source = plainPart(whole);
   const [head, ...rest] = source.split('\r\n\r\n');
   const body = rest.join('\r\n\r\n');
   if (!/content-transfer-encoding: quoted-printable/i.test(head)) return body;

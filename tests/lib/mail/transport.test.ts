@@ -6,16 +6,40 @@ vi.stubEnv('DATABASE_URL', 'postgres://nobody@127.0.0.1:1/none');
 vi.stubEnv('MAIL_URL', mailbox.url);
 vi.stubEnv('NEXTAUTH_URL', 'http://127.0.0.1:3210');
 
-const { invitationMessage, listRoles } = await import('@/lib/mail/messages');
+type Letter = import('@/lib/mail/letter').Letter;
+
+const { mailKinds } = await import('@/lib/mail/kinds');
+const { writeLetter } = await import('@/lib/mail/letter');
+const { listRoles } = await import('@/lib/mail/role-words');
 const { sendMail } = await import('@/lib/mail/transport');
 
-const letter = {
-  email: 'mira@observatory.example',
+const invitation = {
   code: 'a-code',
   collaboration: 'Nearby Giants',
-  roles: ['author', 'student'] as const,
+  roles: ['author', 'student'] as ('author' | 'student')[],
   invitedBy: 'Ruth Castellan',
   expiresAt: new Date('2027-05-04T10:00:00Z'),
+};
+
+const item = {
+  collaboration: 'Nearby <b>Giants</b>',
+  who: '<img src=x onerror=alert(1)>',
+  item: 'survey "ليلى" 🪐',
+  path: '/nearby/surveys/a',
+};
+/** One of each kind, with names that would be markup if they were not text. */
+const samples = {
+  invitation,
+  mention: item,
+  notes: { ...item, notes: [{ who: item.who, item: item.item }] },
+  run: { ...item, outcome: 'failed' as const },
+  'sign-off-asked': { ...item, what: 'freeze' as const },
+  'sign-off-given': { ...item, what: 'agree' as const },
+  'release-published': item,
+  'release-withdrawn': { ...item, reason: 'A <script> in the tables' },
+  'guest-link-ending': { ...item, endsAt: new Date('2027-05-04T10:00:00Z') },
+  'password-reset': { path: '/reset/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
+  'sign-in-link': { path: '/sign-in/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
 };
 
 beforeAll(() => mailbox.received.splice(0));
@@ -24,10 +48,12 @@ afterAll(async () => {
   vi.unstubAllEnvs();
 });
 
-describe('invitationMessage(letter)', () => {
+const letter = writeLetter(mailKinds.invitation.compose(invitation), { words: 'Nothing follows.' });
+const message = { to: { name: '', address: 'mira@observatory.example' }, ...letter };
+
+describe('a letter', () => {
   it('holds one sentence, one link, who and why, and how to stop it', () => {
-    const { to, subject, text } = invitationMessage(letter);
-    expect(to.address).toBe('mira@observatory.example');
+    const { subject, text } = letter;
     expect(subject).toBe('Ruth Castellan invites you to Nearby Giants');
     expect(text).toContain(
       'Ruth Castellan invites you to join Nearby Giants on Rarebound as author and student.',
@@ -35,6 +61,39 @@ describe('invitationMessage(letter)', () => {
     expect(text.match(/https?:\/\/\S+/g)).toEqual(['http://127.0.0.1:3210/join/a-code']);
     expect(text).toContain('until 4 May 2027 (UTC)');
     expect(text).toContain('You get this message because Ruth Castellan gave your address.');
+    expect(text.trimEnd().endsWith('Nothing follows.')).toBe(true);
+  });
+
+  it.each(Object.keys(samples) as (keyof typeof samples)[])(
+    'of kind %s says the same in text and in HTML, with names as text',
+    (kind) => {
+      const { schema, compose } = mailKinds[kind];
+      const data = schema.parse(samples[kind]);
+      const written = writeLetter((compose as (given: unknown) => Letter)(data), {
+        words: 'Stop it:',
+        path: '/mail/stop/x',
+      });
+      const html = written.html.replace(/&#(\d+);/g, (_, code) =>
+        String.fromCodePoint(Number(code)),
+      );
+      const [sentence, link] = written.text.split('\n\n');
+      expect(html).toContain(sentence);
+      expect(html).toContain(link.slice(link.indexOf('http')));
+      expect(written.html).not.toMatch(/<(img|script|b)\b/i);
+      expect(written.text.match(/https?:\/\/\S+/g)).toHaveLength(2);
+      expect(written.subject).not.toMatch(/[\r\n]/);
+    },
+  );
+
+  it('links to this server only', () => {
+    const { schema } = mailKinds.mention;
+    for (const path of [
+      '//elsewhere.example',
+      'https://elsewhere.example',
+      '/\\elsewhere.example',
+    ]) {
+      expect(schema.safeParse({ ...samples.mention, path }).success, path).toBe(false);
+    }
   });
 
   it('lists roles as a sentence does', () => {
@@ -45,10 +104,11 @@ describe('invitationMessage(letter)', () => {
 
 describe('sendMail(message)', () => {
   it('reaches one mailbox, through a real server', async () => {
-    await sendMail(invitationMessage(letter));
+    await sendMail(message);
     expect(mailbox.received).toHaveLength(1);
     const [mail] = mailbox.received;
     expect(mail.to).toEqual(['mira@observatory.example']);
+    expect(mail.source).toMatch(/^content-type: multipart\/alternative/im);
     expect(mail.source).toContain('From: Rarebound <rarebound@localhost>');
     expect(mail.text).toContain('http://127.0.0.1:3210/join/a-code');
   });
@@ -87,7 +147,7 @@ describe('sendMail(message)', () => {
 
   it('says so when the server does not take the message', async () => {
     mailbox.refuse('452 no room');
-    await expect(sendMail(invitationMessage(letter))).rejects.toMatchObject({
+    await expect(sendMail(message)).rejects.toMatchObject({
       status: 503,
       message: 'The mail server did not take the message',
     });
