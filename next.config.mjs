@@ -7,7 +7,7 @@ const config = {
   agentRules: false,
   poweredByHeader: false,
   reactStrictMode: true,
-  serverExternalPackages: ['sequelize', 'graphile-worker', 'umzug', 'piscina'],
+  serverExternalPackages: ['sequelize', 'graphile-worker', 'umzug', 'piscina', 'pdfkit'],
 };
 
 export default config;

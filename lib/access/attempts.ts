@@ -21,6 +21,8 @@ export const limits = {
   'anonymous-requests': { points: 60, seconds: MINUTE_S },
   // A survey may come as one small file a star, dropped together.
   uploads: { points: 120, seconds: MINUTE_S },
+  // A page draws its figures one by one; each is a few milliseconds of work.
+  figures: { points: 120, seconds: MINUTE_S },
   'password-changes': { points: 10, seconds: 15 * MINUTE_S },
   invitations: { points: 60, seconds: 60 * MINUTE_S },
 } as const;

@@ -13,6 +13,8 @@ export interface ApiRoute {
   body?: ZodType;
   /** The body is a file, streamed. */
   isUpload?: boolean;
+  /** Content type of that file, where it is a fixed one. */
+  uploadType?: string;
   status?: number;
   answer?: ZodType;
   /** Content types of an answer that is a file or bytes, besides JSON. */

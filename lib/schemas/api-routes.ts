@@ -303,8 +303,19 @@ const analyses: ApiRoute[] = [
   route('get', `${team}/runs/{run}/maps`, 'read', 'All maps of a run: uint16, little-endian', {
     files: bytes,
   }),
-  route('get', `${team}/runs/{run}/exports/{file}`, 'read', 'A run as CSV, JSON, LaTeX or SVG', {
-    files: ['text/csv', 'application/json', 'application/x-tex', 'image/svg+xml'],
+  route('get', `${team}/runs/{run}/exports/{file}`, 'read', 'A run as CSV, JSON, LaTeX or figure', {
+    files: [
+      'text/csv',
+      'application/json',
+      'application/x-tex',
+      'image/svg+xml',
+      'application/pdf',
+    ],
+  }),
+  route('post', `${team}/figures`, 'read', 'A figure of the product, sent as SVG, as PDF', {
+    isUpload: true,
+    uploadType: 'image/svg+xml',
+    files: ['application/pdf'],
   }),
   route('get', `${team}/runs/{run}/studies`, 'read', 'Further questions of a run, newest first', {
     answer: listOf('studies', studySummarySchema),

@@ -108,9 +108,9 @@ function responsesOf({ answer, files, status }: ApiRoute): RouteConfig['response
   return { [status ?? 200]: { description: 'Done', content }, default: PROBLEM };
 }
 
-function bodyOf({ body, isUpload }: ApiRoute) {
+function bodyOf({ body, isUpload, uploadType = 'application/octet-stream' }: ApiRoute) {
   if (isUpload) {
-    return { required: true, content: { 'application/octet-stream': { schema: FILE } } };
+    return { required: true, content: { [uploadType]: { schema: FILE } } };
   }
   return body && { required: true, content: { 'application/json': { schema: body } } };
 }

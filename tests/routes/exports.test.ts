@@ -124,6 +124,13 @@ describe('posterior.svg', () => {
     expect(words).toContain((lab.run.resultDigest as string).slice(0, 12));
     expect(text).not.toContain('var(');
   });
+
+  it('comes as PDF too, with its fonts inside', async () => {
+    const { response, text } = await fetchFile('posterior.pdf', '?width=88');
+    expect(response.headers.get('content-type')).toBe('application/pdf');
+    expect(text.startsWith('%PDF-1.')).toBe(true);
+    expect(text).toMatch(/\/FontName \/[A-Z]{6}\+SourceSans3/);
+  });
 });
 
 describe('exports', () => {

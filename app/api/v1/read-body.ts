@@ -18,7 +18,7 @@ export function requireJsonType(request: Request): void {
   );
 }
 
-async function readBytes(request: Request): Promise<Uint8Array> {
+async function readBytes(request: Request, longest: number): Promise<Uint8Array> {
   const parts: Uint8Array[] = [];
   let length = 0;
   const reader = request.body?.getReader();
@@ -26,9 +26,9 @@ async function readBytes(request: Request): Promise<Uint8Array> {
     const { done, value } = await reader.read();
     if (done) break;
     length += value.length;
-    if (length > LONGEST_BODY_BYTES) {
+    if (length > longest) {
       await reader.cancel();
-      throw new LabError('too-large', 413, `body: expected at most ${LONGEST_BODY_BYTES} bytes`);
+      throw new LabError('too-large', 413, `body: expected at most ${longest} bytes`);
     }
     parts.push(value);
   }
@@ -37,7 +37,7 @@ async function readBytes(request: Request): Promise<Uint8Array> {
 
 /** The body as JSON, length checked while it comes in. */
 export async function readJson(request: Request): Promise<unknown> {
-  const bytes = await readBytes(request);
+  const bytes = await readBytes(request, LONGEST_BODY_BYTES);
   const declared = request.headers.get('content-length');
   if (declared !== null && Number(declared) !== bytes.length) {
     throw new InputError(
@@ -63,4 +63,25 @@ export async function readJson(request: Request): Promise<unknown> {
       { status: 400 },
     );
   }
+}
+
+/** The body as text of one content type, length checked while it comes in. */
+export async function readText(
+  request: Request,
+  contentType: string,
+  longestBytes: number,
+): Promise<string> {
+  const given = request.headers.get('content-type') ?? '';
+  if (given.split(';')[0].trim().toLowerCase() !== contentType) {
+    throw new InputError(
+      {
+        code: 'content-type',
+        item: 'header',
+        found: given === '' ? 'no content type' : `"${given.slice(0, 40)}"`,
+        expected: contentType,
+      },
+      { status: 415 },
+    );
+  }
+  return new TextDecoder().decode(await readBytes(request, longestBytes));
 }

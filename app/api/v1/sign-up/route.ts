@@ -4,5 +4,5 @@ import { signUp } from '@/lib/services/people';
 
 export const POST = openRoute(
   { body: signUpSchema, status: 201, limit: 'sign-up-address' },
-  ({ body }) => signUp(body),
+  ({ body, address }) => signUp(body, address),
 );

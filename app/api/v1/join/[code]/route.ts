@@ -6,5 +6,5 @@ export const GET = openRoute({}, ({ params }) => getOffer(params.code));
 
 export const POST = openRoute(
   { body: joinSchema, status: 201, limit: 'sign-up-address' },
-  ({ params, person, body }) => acceptInvitation(params.code, person, body),
+  ({ params, person, body, address }) => acceptInvitation(params.code, person, body, address),
 );

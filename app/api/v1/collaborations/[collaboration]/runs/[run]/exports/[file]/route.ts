@@ -1,7 +1,14 @@
 import { z } from 'zod';
 import { collaborationRoute } from '@/app/api/v1/handler';
 import type { Actor } from '@/lib/access/actor';
-import { exportName, exportRun, getFinishedRun, recordExport } from '@/lib/services/exports';
+import {
+  type ExportFile,
+  exportName,
+  exportRun,
+  getFinishedRun,
+  recordExport,
+} from '@/lib/services/exports';
+import { figureAsPdf } from '@/lib/services/figures';
 import { drawPosterior } from './posterior-drawing';
 
 const querySchema = z.strictObject({
@@ -15,11 +22,10 @@ const querySchema = z.strictObject({
 export const GET = collaborationRoute(
   { scope: 'read', query: querySchema },
   async ({ actor, params, query }) => {
-    const { fileName, contentType, text } =
-      params.file === 'posterior.svg'
-        ? await drawFigure(actor, params.run, query.width === '180' ? 180 : 88)
-        : await exportRun(actor, params.run, params.file, query.style);
-    return new Response(text, {
+    const { fileName, contentType, content } = isFigure(params.file)
+      ? await drawFigure(actor, params.run, params.file, query.width === '180' ? 180 : 88)
+      : await exportRun(actor, params.run, params.file, query.style).then(asFile);
+    return new Response(content, {
       headers: {
         'Content-Type': contentType,
         'Content-Disposition': `attachment; filename="${fileName}"`,
@@ -28,10 +34,23 @@ export const GET = collaborationRoute(
   },
 );
 
-async function drawFigure(actor: Actor, runId: string, widthMm: 88 | 180) {
+type Figure = 'posterior.svg' | 'posterior.pdf';
+
+const isFigure = (file: string): file is Figure =>
+  file === 'posterior.svg' || file === 'posterior.pdf';
+
+const asFile = ({ text, ...file }: ExportFile) => ({ ...file, content: text });
+
+async function drawFigure(actor: Actor, runId: string, file: Figure, widthMm: 88 | 180) {
   const run = await getFinishedRun(actor, runId);
-  const fileName = exportName(run, 'posterior.svg');
-  const text = drawPosterior(run, widthMm);
+  const fileName = exportName(run, file);
+  const svg = drawPosterior(run, widthMm);
+  const isPdf = file === 'posterior.pdf';
+  const content = isPdf ? new Uint8Array(await figureAsPdf(svg)) : svg;
   await recordExport(actor, runId, fileName);
-  return { fileName, contentType: 'image/svg+xml; charset=utf-8', text };
+  return {
+    fileName,
+    content,
+    contentType: isPdf ? 'application/pdf' : 'image/svg+xml; charset=utf-8',
+  };
 }
