@@ -7,7 +7,8 @@ if (!baseURL)
 export default defineConfig({
   testDir: 'tests/browser',
   outputDir: 'test-results',
-  workers: 1,
+  // Two files at a time: while one waits for the worker pool the other looks at pages.
+  workers: 2,
   forbidOnly: true,
   timeout: 180_000,
   expect: { timeout: 30_000 },

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
-import { expect, type Page } from '@playwright/test';
+import { type ConsoleMessage, expect, type Page, type Request } from '@playwright/test';
 
 /** Slug of the collaboration that the seed writes. */
 export const LAB = '/breakwater';
@@ -41,17 +41,25 @@ export async function signIn(page: Page, role: string): Promise<void> {
 export const statementNumber = (page: Page) => page.locator('#statement .statement-number');
 
 /** Collects what a page must not do: complain, break its content policy, ask another host. */
-export function watchPage(page: Page): { faults: string[] } {
+export function watchPage(page: Page): { faults: string[]; stop: () => void } {
   const faults: string[] = [];
-  page.on('console', (message) => {
+  const ours = new URL(process.env.BASE_URL ?? '').origin;
+  const onMessage = (message: ConsoleMessage) => {
     if (message.type() === 'error') faults.push(message.text());
-  });
-  page.on('pageerror', (error) => faults.push(error.message));
-  page.on('request', (request) => {
+  };
+  const onError = (error: Error) => faults.push(error.message);
+  const onRequest = (request: Request) => {
     const address = new URL(request.url());
     const isLocal = ['data:', 'blob:'].includes(address.protocol);
-    if (!isLocal && address.origin !== new URL(process.env.BASE_URL ?? '').origin)
-      faults.push(`asked ${address.host}`);
-  });
-  return { faults };
+    if (!isLocal && address.origin !== ours) faults.push(`asked ${address.host}`);
+  };
+  page.on('console', onMessage);
+  page.on('pageerror', onError);
+  page.on('request', onRequest);
+  const stop = () => {
+    page.off('console', onMessage);
+    page.off('pageerror', onError);
+    page.off('request', onRequest);
+  };
+  return { faults, stop };
 }

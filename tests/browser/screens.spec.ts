@@ -59,7 +59,7 @@ const excessWidth = (page: Page) =>
  * by style alone, so the page is loaded once.
  */
 async function look(page: Page, address: string): Promise<void> {
-  const { faults } = watchPage(page);
+  const { faults, stop } = watchPage(page);
   await page.emulateMedia({ colorScheme: 'light', reducedMotion: 'reduce' });
   await page.setViewportSize({ width: 1440, height: 900 });
   await page.goto(address);
@@ -72,6 +72,7 @@ async function look(page: Page, address: string): Promise<void> {
     await page.setViewportSize({ width, height: 844 });
     await expect.poll(() => excessWidth(page), { message: `at ${width} px` }).toBe(0);
   }
+  stop();
   expect(faults).toEqual([]);
 }
 
@@ -80,20 +81,16 @@ for (const address of outside) {
 }
 
 test.describe('of a collaboration', () => {
-  let storageState: Awaited<ReturnType<ReturnType<Page['context']>['storageState']>>;
+  // One window for all pages: what they share is fetched and compiled once, as for a person.
+  let page: Page;
 
   test.beforeAll(async ({ browser, baseURL }) => {
     const context = await browser.newContext({ baseURL });
-    await signIn(await context.newPage(), 'owner');
-    storageState = await context.storageState();
-    await context.close();
+    page = await context.newPage();
+    await signIn(page, 'owner');
   });
 
-  for (const address of inside) {
-    test(address, async ({ browser, baseURL }) => {
-      const context = await browser.newContext({ baseURL, storageState });
-      await look(await context.newPage(), address);
-      await context.close();
-    });
-  }
+  test.afterAll(() => page.context().close());
+
+  for (const address of inside) test(address, () => look(page, address));
 });
