@@ -1,7 +1,7 @@
 import { type ColumnUnit, ourUnit, readColumnUnit } from './column-units';
 import type { MapRecord, ReadContext } from './kinds';
 import { uploadLimits } from './limits';
-import { axisRule, mapShapeFault } from './map-grid';
+import { axisRule, convertedFault, mapShapeFault } from './map-grid';
 import { CompletenessValues } from './map-values';
 import { findTargetNameProblem, TargetBook } from './names';
 import { type FaultReport, type NoteReport, quoteFound } from './reports';
@@ -162,7 +162,12 @@ class CubeReading {
           found: `${value} after ${raw.values[i - 1]}`,
           expected: `${what} that increase`,
         });
-      } else values.push(convert === null ? value : convert(value));
+      } else {
+        const converted = convert === null ? value : convert(value);
+        const fault = convertedFault(converted, value, values.at(-1) ?? 0);
+        if (fault === null) values.push(converted);
+        else this.faults.add({ ...raw.place(i), ...fault });
+      }
     }
     return values.length === raw.values.length ? values : null;
   }

@@ -24,3 +24,18 @@ export function axisRule(what: string, unit: string) {
     hint: 'Are these logarithms?',
   };
 }
+
+/**
+ * The fault of a converted axis value that no longer increases or is no number above 0: units can
+ * carry a value beyond what can be stored.
+ *
+ * @param before the converted value before it, 0 for the first
+ */
+export function convertedFault(value: number, written: number, before: number): Fault | null {
+  if (Number.isFinite(value) && value > before) return null;
+  return {
+    code: 'out-of-range',
+    found: String(written),
+    expected: 'a value that can be stored after conversion of its unit',
+  };
+}

@@ -1,7 +1,7 @@
 import { type ColumnUnit, ourUnit, readColumnUnit } from './column-units';
 import { foldHeading, splitHeading } from './headings';
 import type { ColumnReading, MapRecord, ReadContext } from './kinds';
-import { axisRule, mapShapeFault } from './map-grid';
+import { axisRule, convertedFault, mapShapeFault } from './map-grid';
 import { CompletenessValues } from './map-values';
 import { findTargetNameProblem, TargetBook } from './names';
 import { readNumberText } from './numbers';
@@ -158,7 +158,10 @@ export class WideMapReading {
         });
       } else {
         last = reading;
-        values.push(convert === null ? reading : convert(reading));
+        const value = convert === null ? reading : convert(reading);
+        const fault = convertedFault(value, reading, values.at(-1) ?? 0);
+        if (fault === null) values.push(value);
+        else this.faults.add({ ...where(index), ...fault });
       }
     });
     return values;

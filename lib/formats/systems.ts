@@ -101,6 +101,13 @@ function checkEmpty(reading: TableReading, row: number, name: string, system: Sy
 }
 
 function checkWhole(reading: TableReading, { weight, companionSystem }: SystemsRecord): void {
+  if (!Number.isFinite(weight.reduce((sum, value) => sum + value, 0))) {
+    reading.fault(reading.table.headingPlace, {
+      code: 'out-of-range',
+      found: 'weights whose sum is too large to be stored',
+      expected: 'smaller weights; only their ratios matter',
+    });
+  }
   if (!companionSystem.some((system) => weight[system] > 0)) {
     reading.fault(reading.table.headingPlace, {
       code: 'too-few',

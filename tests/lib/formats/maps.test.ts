@@ -81,6 +81,25 @@ describe('readLongMaps(table)', () => {
   });
 });
 
+describe('readMapCube(json)', () => {
+  it.each([
+    ['solMass', [1, 1e308], 'out-of-range'],
+    ['earthMass', [5e-324, 1e-323], 'out-of-range'],
+  ])('refuses masses that the unit %s carries beyond what can be stored', (unit, values, code) => {
+    const map = {
+      target: 'A',
+      mass: { unit, values },
+      semi_major_axis: { unit: 'AU', values: [1, 2] },
+      completeness: [
+        [0, 1],
+        [0, 1],
+      ],
+    };
+    const [first] = faultsOf('completeness-maps', JSON.stringify(map), { fileName: 'map.json' });
+    expect(first).toMatch(new RegExp(`^${code} at .*mass`));
+  });
+});
+
 describe('WideMapReading(table)', () => {
   it('reads units from the corner', () => {
     const [map] = recordsOf(
@@ -99,6 +118,10 @@ describe('WideMapReading(table)', () => {
     [',5,10\n2,0.1,0.2\n1,0.3,0.4\n', 'axis-order at line 3, column 1'],
     [',5,10\n1,0.1,0.2\n1,0.3,0.4\n', 'axis-order at line 3, column 1'],
     [',0,10\n1,0.1,0.2\n2,0.3,0.4\n', 'out-of-range at line 1, column 2'],
+    [
+      'mass [solMass]\\semi_major_axis,5,10\n1,0.1,0.2\n1e308,0.3,0.4\n',
+      'out-of-range at line 3, column 1',
+    ],
     [',5,10\n1,0.1,2\n2,0.3,0.4\n', 'probability-range at line 2, column 3'],
     [',5,10\n1,0.1,x\n2,0.3,0.4\n', 'not-a-number at line 2, column 3'],
     [',5,10\n1,0.1,0.2\n', 'map-shape at file'],
