@@ -176,7 +176,8 @@ export function parseCsv(
     return null;
   }
   describeLayout(bytes, layout, notes);
-  return readDelimited(bytes, layout, maxRows, faults);
+  const table = readDelimited(bytes, layout, maxRows, faults);
+  return table && Object.assign(table, { hasFormulaGuards: true });
 }
 
 /** Reads rows of delimited cells below a heading line whose place and separator are known. */

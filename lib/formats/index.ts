@@ -17,5 +17,8 @@ export {
   type SamplesResult,
 } from './read-upload';
 export { placeOf } from './reports';
+export * from './write-arrays';
 export { type CsvCell, type CsvColumn, writeCsv } from './write-csv';
-export { type WrittenTarget, writeTargets } from './write-targets';
+export { writeFitsTable } from './write-fits/table';
+export * from './write-tables';
+export { bandsOfTargets, targetRow, type WrittenTarget, writeTargets } from './write-targets';

@@ -29,5 +29,6 @@ export function withoutLeftOut(table: RawTable, context: ReadContext): RawTable 
     rowCount: kept.length,
     headingPlace: table.headingPlace,
     rowPlace: (row) => table.rowPlace(kept[row]),
+    hasFormulaGuards: table.hasFormulaGuards,
   };
 }

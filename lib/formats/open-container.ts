@@ -7,7 +7,7 @@ import { readFitsTable } from './fits-table';
 import { parseHdf5 } from './hdf5';
 import { cubeOfJson } from './json-map';
 import { tableOfJson } from './json-table';
-import { isObject, parseJsonText } from './json-text';
+import { isObject, memberOf, parseJsonText } from './json-text';
 import type { Container, ReadContext } from './kinds';
 import { uploadLimits } from './limits';
 import { cubeOfArrays } from './map-arrays';
@@ -221,7 +221,9 @@ function openJson(bytes: Uint8Array, options: OpenOptions): Opened | null {
   if (context.kind === 'completeness-maps' && isObject(parsed.value)) {
     return asCube('json', cubeOfJson(parsed.value, faults));
   }
-  return asTable('json', tableOfJson(parsed.value, options));
+  // Our own tables come as an object: what they rest on, and the rows.
+  const rows = isObject(parsed.value) ? memberOf(parsed.value, 'rows') : undefined;
+  return asTable('json', tableOfJson(rows ?? parsed.value, options));
 }
 
 /** Opens a container that needs no waiting: everything but archives and HDF5. */

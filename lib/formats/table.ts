@@ -28,6 +28,8 @@ export interface RawTable {
   headingPlace: Place;
   /** Where a row stands; rows count from 0. */
   rowPlace(row: number): Place;
+  /** Free text that a spreadsheet would run carries a leading ' in this container. */
+  hasFormulaGuards?: boolean;
   /** How a column that no kind knows is told, where not as a heading. */
   unknownColumn?(index: number): { code: string; place: Place };
 }

@@ -65,6 +65,7 @@ function readTarget(
   const position = readPosition(reading, row);
   const distance = readDistance(reading, row);
   const age = readAge(reading, row);
+  const notes = reading.prose('notes', row) ?? null;
   const record: TargetRecord = {
     line: reading.place(row).line ?? row + 1,
     name,
@@ -85,7 +86,7 @@ function readTarget(
     ...readBinary(reading, row),
     debrisDisk: reading.boolean('debris_disk', row) ?? null,
     selectedForCompanion: reading.boolean('selected_for_companion', row) ?? null,
-    notes: removeFormulaGuard(reading.prose('notes', row) ?? null),
+    notes: reading.table.hasFormulaGuards ? removeFormulaGuard(notes) : notes,
     reference: reading.text('reference', row, 1000) ?? null,
   };
   if (reading.faults.count === 0) tellAbout(reading, row, record);

@@ -58,12 +58,22 @@ const lastColumns: readonly (readonly [string, Value])[] = [
 ];
 
 function magnitudeColumns(targets: readonly WrittenTarget[]): [string, Value][] {
-  const bands = [...new Set(targets.flatMap((target) => Object.keys(target.magnitudes)))];
-  return bands.flatMap((band): [string, Value][] => [
+  return bandsOfTargets(targets).flatMap((band): [string, Value][] => [
     [`mag_${band}`, (t) => t.magnitudes[band]?.valueMag ?? null],
     [`mag_${band}_error`, (t) => t.magnitudes[band]?.errorMag ?? null],
   ]);
 }
+
+/** A target as a row of the table that reads back to the same record, keyed by column. */
+export function targetRow(target: WrittenTarget): Record<string, CsvCell> {
+  const known = [...fixedColumns, ...magnitudeColumns([target]), ...lastColumns];
+  return Object.fromEntries(known.map(([name, value]) => [name, value(target)]));
+}
+
+/** Bands in which any of these targets has a magnitude, in the order of first appearance. */
+export const bandsOfTargets = (targets: readonly WrittenTarget[]): string[] => [
+  ...new Set(targets.flatMap(({ magnitudes }) => Object.keys(magnitudes))),
+];
 
 /**
  * Writes targets as a table that reads back to the same records, in our units. Columns that no
