@@ -28,11 +28,11 @@ function numberCell(value: number, plus: number | null, minus: number | null): L
  * smaller one, other numbers to four digits, which a note says.
  */
 export function writeLatex(table: WrittenTable, choice: LatexChoice, style: LatexStyle): string {
-  const valueOf = new Map(table.columns.map((column) => [column.name, column]));
-  const chosen = choice.columns.flatMap((name) => valueOf.get(name) ?? []);
+  const columnOf = new Map(table.columns.map((column) => [column.name, column]));
+  const chosen = choice.columns.flatMap((name) => columnOf.get(name) ?? []);
   const errorOf = (name: string, row: number, side: 'lower' | 'upper') => {
-    const both = asNumber(plainCell(valueOf.get(`${name}_error`)?.values[row]));
-    return both ?? asNumber(plainCell(valueOf.get(`${name}_error_${side}`)?.values[row]));
+    const both = asNumber(plainCell(columnOf.get(`${name}_error`)?.values[row]));
+    return both ?? asNumber(plainCell(columnOf.get(`${name}_error_${side}`)?.values[row]));
   };
   const rows = Array.from({ length: rowCount(table) }, (_, row) =>
     chosen.map(({ name, values, type }): LatexCell => {
