@@ -7,6 +7,7 @@ const rooms = [
   ['sensitivity', '^lib/sensitivity/', 2],
   ['population', '^lib/population/', 2],
   ['inference', '^lib/inference/', 3],
+  ['help', '^lib/help/', 3],
   ['config', '^lib/config\\.ts$', 4],
   ['models', '^models/', 4],
   ['access', '^lib/access/', 4],

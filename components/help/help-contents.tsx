@@ -1,0 +1,40 @@
+import Link from 'next/link';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { type HelpGroup, helpGroups, helpWordNames, helpWords } from '@/lib/help';
+
+/** The first sentence of a definition, without its formulas' dollar signs. */
+function firstSentence(definition: string): string {
+  const plain = definition.replace(/\$[^$]*\$/g, '…');
+  const end = plain.search(/[.:;](?= |$)/);
+  return end < 0 ? plain : `${plain.slice(0, end)}.`;
+}
+
+/** Every word, by group, each with what it means in a sentence. */
+export function HelpContents() {
+  return (
+    <div className="grid gap-x-14 gap-y-10 lg:grid-cols-2">
+      {(Object.keys(helpGroups) as HelpGroup[]).map((group) => (
+        <section key={group} className="min-w-0">
+          <SectionOpener title={helpGroups[group]} />
+          <ul>
+            {helpWordNames
+              .filter((word) => helpWords[word].group === group)
+              .map((word) => (
+                <li
+                  key={word}
+                  className="grid gap-x-4 border-rule border-b py-1.5 sm:grid-cols-[13rem_1fr]"
+                >
+                  <Link href={`/help/${word}`} prefetch={false} className="py-1 font-semibold">
+                    {helpWords[word].title}
+                  </Link>
+                  <span className="py-1 text-ink2 text-note">
+                    {firstSentence(helpWords[word].definition)}
+                  </span>
+                </li>
+              ))}
+          </ul>
+        </section>
+      ))}
+    </div>
+  );
+}
