@@ -1,0 +1,146 @@
+import { randomUUID } from 'node:crypto';
+import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import type { RouteHandler } from '@/app/api/v1/handler';
+import { type ApiRoute, apiRoutes } from '@/lib/schemas/api-routes';
+import { database } from '@/models';
+import { withDatabase } from '../support/database';
+import {
+  addMember,
+  bearer,
+  call,
+  createCollaborationWith,
+  createPerson,
+  sessionCookieOf,
+  type TestCollaboration,
+  type TestPerson,
+  tokenOf,
+  webAddress,
+} from '../support/people';
+
+// What holds of every handler alike; what each role may do stands in the tests of each noun.
+const modules = import.meta.glob<Record<string, RouteHandler>>('/app/api/v1/**/route.ts');
+const { query } = withDatabase();
+
+const home = '/api/v1/collaborations/{collaboration}';
+const ours = apiRoutes.filter(({ path }) => path === home || path.startsWith(`${home}/`));
+const isWrite = ({ method }: ApiRoute) => method !== 'get';
+/** Names between braces, without the collaboration itself. */
+const idsIn = ({ path }: ApiRoute) =>
+  [...path.matchAll(/\{(\w+)\}/g)]
+    .map(([, name]) => name)
+    .filter((name) => name !== 'collaboration');
+
+let team: { collaboration: TestCollaboration; people: { owner: TestPerson; student: TestPerson } };
+type Headers = Record<string, string>;
+let owner: { token: Headers; cookie: string };
+let outsider: { token: Headers; cookie: string };
+/** Tokens and a session that were good once. */
+let lapsed: Headers[];
+const tokenWithout = new Map<string, Headers>();
+
+async function signedIn(person: TestPerson, collaboration: TestCollaboration) {
+  const { cookie } = await sessionCookieOf(person);
+  return { token: bearer(await tokenOf(person, collaboration)), cookie };
+}
+
+beforeAll(async () => {
+  team = await createCollaborationWith(['owner', 'student']);
+  const { collaboration, people } = team;
+  const other = await createCollaborationWith(['owner']);
+  outsider = await signedIn(other.people.owner, other.collaboration);
+  owner = await signedIn(people.owner, collaboration);
+  const past = await tokenOf(people.owner, collaboration, undefined, new Date(Date.now() - 1000));
+  const session = await sessionCookieOf(people.owner);
+  await query('delete from session where id = $1', [session.sessionId]);
+  lapsed = [bearer(past), bearer('not-a-token'), { cookie: session.cookie, origin: webAddress() }];
+  for (const access of ['read', 'write', 'run'] as const) {
+    const scopes = (['read', 'write', 'run'] as const).filter((scope) => scope !== access);
+    tokenWithout.set(access, bearer(await tokenOf(people.owner, collaboration, scopes)));
+  }
+});
+// Past the limits of attempts, which have tests of their own; on the connection that is open.
+beforeEach(async () => {
+  await database().query('delete from rate_limit');
+});
+
+async function ask(
+  route: ApiRoute,
+  headers: Record<string, string>,
+  { id = () => randomUUID(), body }: { id?: (name: string) => string; body?: unknown } = {},
+): Promise<Response> {
+  const file = `${route.path.replace(/\{(\w+)\}/g, '[$1]')}/route.ts`;
+  const method = route.method.toUpperCase();
+  const module = await modules[`/app${file}`]();
+  const params = Object.fromEntries(idsIn(route).map((name) => [name, id(name)]));
+  return call(module[method], {
+    method,
+    params: { collaboration: team.collaboration.slug, ...params },
+    headers,
+    body: isWrite(route) && !route.isUpload ? (body ?? {}) : undefined,
+  });
+}
+
+const statusOf = async (...asked: Parameters<typeof ask>) => (await ask(...asked)).status;
+
+const oddIds = ['1 or 1=1', "'; drop table star", '9'.repeat(400), '..', '\u0000', '💫', '-1'];
+const deep = JSON.parse(`${'['.repeat(500)}${']'.repeat(500)}`);
+const oddBodies = [null, [], 'text', 7, deep, { constructor: 1, __proto__: { a: 1 } }];
+const named = ours.map(
+  (route) => [`${route.method} ${route.path.slice(home.length)}`, route] as const,
+);
+
+describe.each(named)('of a collaboration: %s', (_, route) => {
+  it('is closed to nobody, and to what has ended or was made up', async () => {
+    for (const headers of [{}, ...lapsed]) expect(await statusOf(route, headers)).toBe(401);
+  });
+
+  it('does not exist for an outsider, by token or by session', async () => {
+    const byToken = await ask(route, outsider.token);
+    const bySession = await ask(route, { cookie: outsider.cookie, origin: webAddress() });
+    expect([byToken.status, bySession.status]).toEqual([404, 404]);
+    const absent = await ask(route, outsider.token, { id: () => 'no-such-thing' });
+    const words = ({ title, detail }: { title: string; detail: string }) => ({ title, detail });
+    expect(words(await absent.json())).toEqual(words(await byToken.json()));
+  });
+
+  it('needs the scope that the description names', async () => {
+    // What only a session may do is no matter of scopes: tokens are refused by the work itself.
+    if (route.access === 'session') return;
+    expect(await statusOf(route, tokenWithout.get(route.access) ?? {})).toBe(403);
+  });
+
+  it('takes no write that another site sends', async () => {
+    if (!isWrite(route)) return;
+    const { cookie } = owner;
+    for (const origin of ['https://elsewhere.example', 'null', '']) {
+      expect(await statusOf(route, { cookie, ...(origin ? { origin } : {}) })).toBe(403);
+    }
+  });
+
+  it('answers an owner without a fault of the server, whatever ids and body are sent', async () => {
+    for (const odd of oddIds) {
+      const status = await statusOf(route, owner.token, { id: () => odd });
+      expect(status, odd).toBeLessThan(500);
+      if (idsIn(route).length > 0 && !isWrite(route)) expect([404, 422]).toContain(status);
+    }
+    if (!isWrite(route) || route.isUpload) return;
+    for (const body of oddBodies) {
+      const response = await ask(route, owner.token, { body });
+      expect(response.status, JSON.stringify(body).slice(0, 40)).toBeLessThan(500);
+      if (route.body) expect(response.status).toBeGreaterThanOrEqual(400);
+    }
+  });
+});
+
+it('a person who was removed is an outsider at the next request', async () => {
+  const person = await createPerson();
+  const membership = await addMember(team.collaboration, person, ['author']);
+  const token = bearer(await tokenOf(person, team.collaboration));
+  const { cookie } = await sessionCookieOf(person);
+  const reading = ours.find(({ path, method }) => path === home && method === 'get');
+  if (!reading) throw new Error('the collaboration itself has no address');
+  expect(await statusOf(reading, token)).toBe(200);
+  await query('delete from member where id = $1', [membership]);
+  expect([401, 404]).toContain(await statusOf(reading, token));
+  expect(await statusOf(reading, { cookie })).toBe(404);
+});
