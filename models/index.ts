@@ -12,6 +12,8 @@ import { CompanionVerdictRow, defineCompanionVerdict } from './companion-verdict
 import { CompletenessMapRow, defineCompletenessMap } from './completeness-map';
 import { ContrastCurveRow, defineContrastCurve } from './contrast-curve';
 import { CoolingTableRow, defineCoolingTable } from './cooling-table';
+import { BundleImportRow, defineFrozenRun, FrozenRunRow } from './frozen-run';
+import { defineGuestLink, GuestLinkRow, GuestNoteRow } from './guest-link';
 import { defineInvitation, InvitationRow } from './invitation';
 import { defineJob, JobRow } from './job';
 import { defineMember, MemberRow } from './member';
@@ -19,9 +21,11 @@ import { defineNote, NoteRow } from './note';
 import { defineOutgoingMessage, OutgoingMessageRow } from './outgoing-message';
 import { definePerson, PersonRow } from './person';
 import { definePopulation, PopulationRow } from './population';
+import { defineRelease, ReleaseFileRow, ReleaseRow, ReleaseRunRow } from './release';
 import { defineRun, RunRow } from './run';
 import { defineSample, SampleRow } from './sample';
 import { defineSession, SessionRow } from './session';
+import { defineShare, ShareRow } from './share';
 import { defineStar, StarRow } from './star';
 import { defineStarMatch, StarMatchRow } from './star-match';
 import { defineStudy, StudyRow } from './study';
@@ -36,6 +40,7 @@ export {
   AdoptedValueRow,
   AnalysisRow,
   AuditEntryRow,
+  BundleImportRow,
   CollaborationRow,
   ColumnMemoryRow,
   CombinationRow,
@@ -45,6 +50,9 @@ export {
   CompletenessMapRow,
   ContrastCurveRow,
   CoolingTableRow,
+  FrozenRunRow,
+  GuestLinkRow,
+  GuestNoteRow,
   InvitationRow,
   JobRow,
   MemberRow,
@@ -52,9 +60,13 @@ export {
   OutgoingMessageRow,
   PersonRow,
   PopulationRow,
+  ReleaseFileRow,
+  ReleaseRow,
+  ReleaseRunRow,
   RunRow,
   SampleRow,
   SessionRow,
+  ShareRow,
   StarMatchRow,
   StarRow,
   StudyRow,
@@ -99,6 +111,7 @@ function defineModels(sequelize: Sequelize): void {
   defineMember(sequelize);
   defineInvitation(sequelize);
   defineAccessToken(sequelize);
+  defineShare(sequelize);
   defineSurvey(sequelize);
   defineUpload(sequelize);
   defineUploadChange(sequelize);
@@ -120,6 +133,9 @@ function defineModels(sequelize: Sequelize): void {
   defineCombination(sequelize);
   defineRun(sequelize);
   defineStudy(sequelize);
+  defineFrozenRun(sequelize);
+  defineRelease(sequelize);
+  defineGuestLink(sequelize);
   defineNote(sequelize);
   defineOutgoingMessage(sequelize);
   defineAuditEntry(sequelize);

@@ -13,7 +13,12 @@ export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled';
 export class JobRow extends Model<InferAttributes<JobRow>, InferCreationAttributes<JobRow>> {
   declare id: CreationOptional<string>;
   declare collaborationId: string;
-  declare kind: 'compute-maps' | 'compute-run' | 'compute-study';
+  declare kind:
+    | 'compute-maps'
+    | 'compute-run'
+    | 'compute-study'
+    | 'verify-release'
+    | 'recreate-run';
   declare surveyId: CreationOptional<string | null>;
   declare status: CreationOptional<JobStatus>;
   declare payload: CreationOptional<Record<string, unknown>>;

@@ -32,18 +32,18 @@ export function gridOf(settings: MapSettings): MapGrid {
   };
 }
 
+const BUILT_IN: Pick<MapRecipe, 'cooling' | 'coolingName' | 'coolingDigest'> = {
+  cooling: { kind: 'built-in' },
+  coolingName: 'built-in approximate cooling law',
+  coolingDigest: 'built-in',
+};
+
 async function loadCooling(
   collaborationId: string,
   { cooling }: MapSettings,
   transaction?: Transaction,
 ): Promise<Pick<MapRecipe, 'cooling' | 'coolingName' | 'coolingDigest'>> {
-  if (cooling.kind === 'built-in') {
-    return {
-      cooling: { kind: 'built-in' },
-      coolingName: 'built-in approximate cooling law',
-      coolingDigest: 'built-in',
-    };
-  }
+  if (cooling.kind === 'built-in') return BUILT_IN;
   const row = await CoolingTableRow.findOne({
     where: { id: cooling.coolingTableId, collaborationId },
     transaction,
@@ -54,6 +54,13 @@ async function loadCooling(
       message: 'The cooling table that the survey names is not there; choose another',
     });
   }
+  return coolingOf(row);
+}
+
+/** A stored cooling table as the engine takes it. */
+function coolingOf(
+  row: Pick<CoolingTableRow, 'name' | 'massMjup' | 'ageMyr' | 'magnitudes' | 'digest'>,
+): Pick<MapRecipe, 'cooling' | 'coolingName' | 'coolingDigest'> {
   const magnitudes = Object.entries(row.magnitudes).map(([band, values]) => [
     band,
     Float64Array.from(values, (value) => value ?? Number.NaN),
@@ -100,6 +107,18 @@ export async function loadRecipe(
     grid: gridOf(settings),
     settings: rulesOf(settings),
     ...(await loadCooling(collaborationId, settings, transaction)),
+  };
+}
+
+/** The recipe of settings with the cooling table that they name; none for the built-in law. */
+export function recipeWithTable(
+  settings: MapSettings,
+  table: Parameters<typeof coolingOf>[0] | null,
+): MapRecipe {
+  return {
+    grid: gridOf(settings),
+    settings: rulesOf(settings),
+    ...(table ? coolingOf(table) : BUILT_IN),
   };
 }
 

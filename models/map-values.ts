@@ -1,5 +1,27 @@
 import { createHash } from 'node:crypto';
+import { endianness } from 'node:os';
 import { decodeMap, encodeMap } from '@/lib/sensitivity';
+
+const isBigEndian = endianness() === 'BE';
+
+/**
+ * Numbers of a map as it lies in the table, little-endian; the bytes may begin at an odd address.
+ *
+ * @returns a copy, shape [mass, semiMajorAxis]
+ */
+export function asEncoded(bytes: Buffer): Uint16Array {
+  const encoded = new Uint16Array(bytes.length / 2);
+  const own = Buffer.from(encoded.buffer);
+  own.set(bytes);
+  if (isBigEndian) own.swap16();
+  return encoded;
+}
+
+/** The bytes of numbers that nobody reads afterwards, little-endian; nothing is copied. */
+export function ownBytes(encoded: Uint16Array): Buffer {
+  const bytes = Buffer.from(encoded.buffer, encoded.byteOffset, encoded.byteLength);
+  return isBigEndian ? bytes.swap16() : bytes;
+}
 
 /**
  * A map as it lies in the table: uint16 = round(65535 C), little-endian, row-major.
@@ -7,15 +29,11 @@ import { decodeMap, encodeMap } from '@/lib/sensitivity';
  * @param completeness shape [mass, semiMajorAxis], row-major, 0 to 1, not modified
  */
 export function packMap(completeness: Float64Array): { nodeValues: Buffer; checksum: string } {
-  const encoded = encodeMap(completeness);
-  const nodeValues = Buffer.alloc(encoded.length * 2);
-  for (let i = 0; i < encoded.length; i++) nodeValues.writeUInt16LE(encoded[i], i * 2);
+  const nodeValues = ownBytes(encodeMap(completeness));
   return { nodeValues, checksum: createHash('sha256').update(nodeValues).digest('hex') };
 }
 
 /** The inverse of packMap: values within 7.7e-6 of those that were packed. */
 export function unpackMap(nodeValues: Buffer): Float64Array {
-  const encoded = new Uint16Array(nodeValues.length / 2);
-  for (let i = 0; i < encoded.length; i++) encoded[i] = nodeValues.readUInt16LE(i * 2);
-  return decodeMap(encoded);
+  return decodeMap(asEncoded(nodeValues));
 }

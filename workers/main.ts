@@ -13,11 +13,15 @@ import { startPost } from './post';
 import { performComputeMaps } from './tasks/compute-maps';
 import { performComputeRun } from './tasks/compute-run';
 import { performComputeStudy } from './tasks/compute-study';
+import { performRecreateRun } from './tasks/recreate-run';
+import { performVerifyRelease } from './tasks/verify-release';
 
 const tasks: Record<JobKind, (work: Work) => Promise<void>> = {
   'compute-maps': performComputeMaps,
   'compute-run': performComputeRun,
   'compute-study': performComputeStudy,
+  'verify-release': performVerifyRelease,
+  'recreate-run': performRecreateRun,
 };
 
 /** Jobs at once: one per thread would let many small runs wait behind one survey's maps. */

@@ -1,4 +1,4 @@
-import { AccessError } from '@/lib/errors';
+import { AccessError, Conflict } from '@/lib/errors';
 import type { Role } from '@/lib/schemas/common';
 import type { Actor } from './actor';
 
@@ -65,6 +65,16 @@ export const permissions = {
     ['no', 'lead', 'no', 'no', 'yes'],
     'Ask the lead of the survey',
   ),
+  'offer-survey': row(
+    'offer a survey to another collaboration, and take it back',
+    ['no', 'lead', 'no', 'no', 'yes'],
+    'Ask the lead of the survey',
+  ),
+  'accept-survey': row(
+    'accept a survey of another collaboration, or refuse it',
+    ['no', 'yes', 'no', 'no', 'yes'],
+    'Ask an owner or a collaborator',
+  ),
   import: row(
     'import targets, curves, maps and companions',
     ['no', 'lead', 'no', 'no', 'yes'],
@@ -109,6 +119,11 @@ export const permissions = {
     'freeze a run',
     ['no', 'no', 'no', 'yes', 'yes'],
     'Ask an author or an owner to freeze it',
+  ),
+  'sign-off-release': row(
+    'sign a release off',
+    ['no', 'no', 'yes', 'no', 'no'],
+    'Ask a statistician to sign it off',
   ),
   'agree-release': row(
     'agree to a release that somebody else froze',
@@ -170,8 +185,27 @@ function covers(answer: Answer, item: Standing): boolean {
   return answer === 'yes';
 }
 
+/** What stays possible in an archived collaboration: reading, who may read, and opening it again. */
+const OF_AN_ARCHIVE: ReadonlySet<Action> = new Set([
+  'read',
+  'read-audit',
+  'change-roles',
+  'create-token',
+  'withdraw-release',
+  'manage-collaboration',
+]);
+
+export const ARCHIVED =
+  'This collaboration is archived, so nothing in it changes. An owner can open it again in its settings';
+
+type WhoActs = Pick<Actor, 'roles' | 'isArchived'>;
+
+const isShut = (actor: WhoActs, action: Action) =>
+  actor.isArchived === true && !OF_AN_ARCHIVE.has(action);
+
 /** Whether one of the actor's roles allows the action on this item; roles add up. */
-export function may(actor: Pick<Actor, 'roles'>, action: Action, item: Standing = {}): boolean {
+export function may(actor: WhoActs, action: Action, item: Standing = {}): boolean {
+  if (isShut(actor, action)) return false;
   return actor.roles.some((role) => covers(permissions[action][role], item));
 }
 
@@ -190,9 +224,13 @@ function listRoles(roles: readonly Role[]): string {
  * Refuses what the roles do not allow.
  *
  * @throws AccessError that names the roles which may, and what the person can do instead
+ * @throws Conflict where the roles would do, but the collaboration is archived
  */
-export function demand(actor: Pick<Actor, 'roles'>, action: Action, item: Standing = {}): void {
+export function demand(actor: WhoActs, action: Action, item: Standing = {}): void {
   if (may(actor, action, item)) return;
+  if (isShut(actor, action) && may({ roles: actor.roles }, action, item)) {
+    throw new Conflict(ARCHIVED, 'archived');
+  }
   const permission = permissions[action];
   const needed = rolesThatMay(action);
   const lead = ROLES.some((role) => (permission[role] as Answer) === 'lead');

@@ -105,3 +105,19 @@ export function enqueueStudy(
 ): Promise<string> {
   return insertJob(transaction, { ...asked, kind: 'compute-study', surveyId: null, payload: {} });
 }
+
+/** Asks for the check of a release; the release's row names the job. */
+export function enqueueVerification(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  return insertJob(transaction, { ...asked, kind: 'verify-release', surveyId: null, payload: {} });
+}
+
+/** Asks for a run that a bundle brings in; its row, which names the job, is made with it. */
+export function enqueueRecreation(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  return insertJob(transaction, { ...asked, kind: 'recreate-run', surveyId: null, payload: {} });
+}

@@ -12,6 +12,10 @@ export const jobKinds = {
   'compute-run': z.object({}),
   /** The study that names this job. */
   'compute-study': z.object({}),
+  /** The release that names this job: its runs again, from the inputs that were frozen with them. */
+  'verify-release': z.object({}),
+  /** The run that names this job, brought in with a bundle: its maps first. */
+  'recreate-run': z.object({}),
 } as const;
 
 export type JobKind = keyof typeof jobKinds;

@@ -4,7 +4,7 @@ import { idSchema, moment } from './common';
 export const jobStatusSchema = z.enum(['waiting', 'running', 'done', 'failed', 'cancelled']);
 export const jobSchema = z.object({
   id: idSchema,
-  kind: z.enum(['compute-maps', 'compute-run', 'compute-study']),
+  kind: z.enum(['compute-maps', 'compute-run', 'compute-study', 'verify-release', 'recreate-run']),
   status: jobStatusSchema,
   stage: z.string(),
   done: z.number(),
@@ -16,6 +16,8 @@ export const jobSchema = z.object({
   fault: z.string().nullable(),
   /** What it works on, for a sentence: a survey's name or an analysis's key. */
   subject: z.string(),
+  /** The page that shows what it makes, below the collaboration's own; null where that is gone. */
+  page: z.string().nullable(),
   createdAt: moment,
   startedAt: moment.nullable(),
   finishedAt: moment.nullable(),

@@ -23,24 +23,44 @@ interface Subject {
   job_id: string;
   subject: string;
   kind: StudyKind | null;
+  slug: string | null;
+  analysis: number | null;
+  study_id: string | null;
+  release: number | null;
+}
+
+function pageOf({ slug, analysis, kind, study_id, release }: Subject): string | null {
+  if (release !== null) return `releases/R-${release}`;
+  if (slug !== null) return `surveys/${slug}`;
+  if (kind === 'forecast') return `forecasts/${study_id}`;
+  if (analysis === null) return null;
+  const studies = kind === null ? '' : kind === 'calibration' ? '/calibration' : `/studies/${kind}`;
+  return `analyses/A-${analysis}${studies}`;
 }
 
 /** What each job works on: a survey's name or an analysis's key with the run's number and question. */
-async function subjectsOf(jobs: JobRow[]): Promise<Map<string, string>> {
+async function subjectsOf(
+  jobs: JobRow[],
+): Promise<Map<string, { words: string; page: string | null }>> {
   if (jobs.length === 0) return new Map();
   const rows = await database().query<Subject>(
     `select j.id as job_id,
-       coalesce(s.name, 'A-' || a.number || ', run ' || r.number, '') as subject, f.kind
-     from job j left join survey s on s.id = j.survey_id
+       coalesce(s.name, 'R-' || e.number, 'A-' || a.number || ', run ' || r.number, '') as subject,
+       f.kind, e.number as release,
+       s.slug, a.number as analysis, f.id as study_id
+     from job j left join survey s on s.id = j.survey_id left join release e on e.job_id = j.id
        left join study f on f.job_id = j.id left join run r on r.job_id = j.id or r.id = f.run_id
        left join analysis a on a.id = r.analysis_id
      where j.id = any($1::uuid[])`,
     { bind: [jobs.map(({ id }) => id)], type: QueryTypes.SELECT },
   );
   return new Map(
-    rows.map(({ job_id, subject, kind }) => [
-      job_id,
-      kind === null ? subject : `${subject}: ${studyNames[kind]}`,
+    rows.map((row) => [
+      row.job_id,
+      {
+        words: row.kind === null ? row.subject : `${row.subject}: ${studyNames[row.kind]}`,
+        page: pageOf(row),
+      },
     ]),
   );
 }
@@ -59,7 +79,8 @@ export async function describeJobs(jobs: JobRow[]): Promise<JobView[]> {
     timeLeftS: timeLeftS(job, now),
     cancelRequested: job.cancelRequestedAt !== null && job.status === 'running',
     fault: job.fault,
-    subject: subjects.get(job.id) ?? '',
+    subject: subjects.get(job.id)?.words ?? '',
+    page: subjects.get(job.id)?.page ?? null,
     createdAt: job.createdAt.toISOString(),
     startedAt: job.startedAt?.toISOString() ?? null,
     finishedAt: job.finishedAt?.toISOString() ?? null,
@@ -106,6 +127,7 @@ async function demandControl(actor: Actor, job: JobRow): Promise<void> {
     demand(actor, 'import', { isLead: survey.leadId === actor.personId });
     return;
   }
+  if (job.kind === 'verify-release') return demand(actor, 'agree-release');
   const study =
     job.kind === 'compute-study'
       ? await StudyRow.findOne({ where: { jobId: job.id }, rejectOnEmpty: true })
@@ -122,6 +144,8 @@ const actionOf = {
   'compute-maps': 'import',
   'compute-run': 'run-analysis',
   'compute-study': 'run-analysis',
+  'verify-release': 'agree-release',
+  'recreate-run': 'run-analysis',
 } as const;
 
 /** Stops a job: a waiting one at once, a running one within seconds. */

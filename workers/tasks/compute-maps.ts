@@ -35,6 +35,19 @@ export async function performComputeMaps(work: Work): Promise<void> {
   }
 }
 
+/** The same of one survey within another job, which goes on afterwards. */
+export async function completeSurvey(work: Work, asked: JobPayload<'compute-maps'>): Promise<void> {
+  const failed = new Map<string, string>();
+  for (;;) {
+    const plan = await inTransaction(async (transaction) => {
+      await hold(transaction, work.attempt);
+      return preparePlan(work, asked, failed, transaction);
+    });
+    if (plan.missing.length === 0) return;
+    await computeMissing(work, plan, failed);
+  }
+}
+
 async function preparePlan(
   { attempt }: Work,
   { surveyId, targetIds }: JobPayload<'compute-maps'>,

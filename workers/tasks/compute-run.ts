@@ -5,29 +5,40 @@ import { complete, hold, reportProgress } from '@/lib/queue/attempt';
 import { findEdgeOutside } from '@/lib/queue/preconditions';
 import { select } from '@/lib/queue/statement';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { type RunInputs, runResultSchema } from '@/lib/schemas/runs';
+import { type RunInputs, type RunResult, runResultSchema } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
 import { database, inTransaction, PopulationRow, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { AnswerRunInput, AnswerRunOutput } from '../compute/answer-run';
 import type { Work } from '../perform';
+import { type MapShelf, tableShelf } from './map-shelf';
 import { treatCandidates, warnCutAndCounted } from './run-candidates';
 import { type MergedCompanions, mergeCompanions } from './run-companions';
 import { hostMassesFor } from './run-hosts';
 import { combineMaps, commonGrid } from './run-maps';
 import { assembleResult, countCompanions } from './run-result';
 import { collectSample, type Sample } from './run-sample';
+import { describeShared } from './run-shared';
 import { type MapStack, stackMaps } from './run-stack';
 import { describeCombination, describeMaps } from './run-words';
 
 /** What a run starts from, read at one moment. */
-interface Collected {
-  run: RunRow;
-  population: PopulationRow;
+export interface Collected {
+  run: Pick<RunRow, 'recipe' | 'engineVersion' | 'seed'>;
+  population: Pick<PopulationRow, 'id' | 'number' | 'version' | 'name' | 'digest' | 'definition'>;
   sample: Sample;
   /** Shape [star] [M_Sun], where the population depends on it. */
   hostMassMsun: Float64Array | undefined;
   companions: MergedCompanions;
+  /** Surveys of other collaborations, with their attribution. */
+  shared?: RunInputs['shared'];
+}
+
+/** What a run gives: its inputs as they were used, its result, and what it is stored with. */
+export interface Computed {
+  inputs: RunInputs;
+  result: RunResult;
+  completenessPerStar: number[];
 }
 
 /**
@@ -41,25 +52,38 @@ export async function performComputeRun(work: Work): Promise<void> {
     return reportProgress(attempt, stage, 0, total);
   };
   await enter('collect', 1);
-  const collected = await collect(work);
+  const { run, ...collected } = await collect(work);
+  const computed = await computeCollected(work, { run, ...collected }, tableShelf(work), {
+    enter,
+    combined: (done, total) => reportProgress(attempt, 'combine', done, total),
+  });
+  await enter('store', 1);
+  await store(work, run, computed);
+}
+
+/**
+ * From what was collected to the result; where the maps lie is the shelf's business.
+ *
+ * @throws InputError where stars cannot follow the rule of combination, or ranges reach past the maps
+ */
+export async function computeCollected(
+  work: Work,
+  collected: Collected,
+  shelf: MapShelf,
+  report: {
+    enter(stage: string, total: number): Promise<void>;
+    combined(done: number, total: number): Promise<void>;
+  },
+): Promise<Computed> {
   const { run, population, sample, hostMassMsun, companions } = collected;
   const { recipe } = run;
   const grid = commonGrid(sample);
-  const digests = await combineMaps(work, sample, recipe.combination, grid, (done, total) =>
-    reportProgress(attempt, 'combine', done, total),
-  );
-  await enter('integrate', sample.stars.length);
+  const digests = await combineMaps(work, sample, recipe.combination, grid, report.combined, shelf);
+  await report.enter('integrate', sample.stars.length);
   const { definition } = population;
-  const stack = await stackMaps(
-    attempt.collaborationId,
-    sample.stars,
-    digests,
-    grid,
-    definition,
-    hostMassMsun,
-  );
+  const stack = await stackMaps(shelf, sample.stars, digests, grid, definition, hostMassMsun);
   refuseOutside(recipe, definition, stack, hostMassMsun);
-  await enter('posterior', 1);
+  await report.enter('posterior', 1);
   const inputs = describeInputs(collected, stack, grid);
   const counted = countCompanions(companions.confirmed, inputs, definition, recipe);
   const candidates = treatCandidates(inputs, definition, recipe, hostMassMsun);
@@ -89,7 +113,6 @@ export async function performComputeRun(work: Work): Promise<void> {
     },
     { signal: work.signal, transfer: [stack.maps.buffer] },
   );
-  await enter('store', 1);
   const result = runResultSchema.parse(
     assembleResult({
       inputs,
@@ -103,10 +126,10 @@ export async function performComputeRun(work: Work): Promise<void> {
       grid,
     }),
   );
-  await store(work, run, inputs, result, output.completenessPerStar);
+  return { inputs, result, completenessPerStar: output.completenessPerStar };
 }
 
-function collect({ attempt }: Work): Promise<Collected> {
+function collect({ attempt }: Work): Promise<Collected & { run: RunRow }> {
   const { REPEATABLE_READ: isolationLevel } = Transaction.ISOLATION_LEVELS;
   return database().transaction({ isolationLevel }, async (transaction) => {
     const { collaborationId, jobId } = attempt;
@@ -120,7 +143,8 @@ function collect({ attempt }: Work): Promise<Collected> {
     const sample = await collectSample(collaborationId, run.recipe, transaction);
     const hostMassMsun = hostMassesFor(population.definition, sample.stars);
     const companions = await mergeCompanions(sample.stars, population.definition, transaction);
-    return { run, population, sample, hostMassMsun, companions };
+    const shared = await describeShared(sample.surveys, transaction);
+    return { run, population, sample, hostMassMsun, companions, shared };
   });
 }
 
@@ -138,13 +162,13 @@ function refuseOutside(
 }
 
 function describeInputs(
-  { run, population, sample, companions }: Collected,
+  { run, population, sample, companions, shared }: Collected,
   stack: MapStack,
   grid: MapGrid,
 ): RunInputs {
   const entriesOf = (surveyId: string) =>
     stack.stars.filter(({ surveys }) => surveys.includes(surveyId)).length;
-  const shared = sample.stars.filter(({ entries }) => entries.length > 1).length;
+  const inSeveral = sample.stars.filter(({ entries }) => entries.length > 1).length;
   return {
     engineVersion: run.engineVersion,
     seed: run.seed,
@@ -163,7 +187,7 @@ function describeInputs(
       position,
       entries: entriesOf(id),
     })),
-    combination: describeCombination(run.recipe.combination, shared, sample.surveys.length),
+    combination: describeCombination(run.recipe.combination, inSeveral, sample.surveys.length),
     ...describeMaps(sample),
     ...(sample.selection && { sample: sample.selection }),
     ...(sample.combination && { storedCombination: sample.combination.words }),
@@ -171,6 +195,7 @@ function describeInputs(
     stars: stack.stars,
     companions: companions.confirmed,
     undecided: companions.undecided.map((candidate) => ({ ...candidate })),
+    ...(shared && shared.length > 0 && { shared }),
     leftOut: sample.leftOut,
   };
 }
@@ -178,9 +203,7 @@ function describeInputs(
 async function store(
   { attempt }: Work,
   run: RunRow,
-  inputs: RunInputs,
-  result: RunRow['result'],
-  completeness: number[],
+  { inputs, result, completenessPerStar }: Computed,
 ): Promise<void> {
   await inTransaction(async (transaction) => {
     await hold(transaction, attempt);
@@ -194,7 +217,7 @@ async function store(
       },
       { transaction },
     );
-    await storeRunStars(attempt.collaborationId, run.id, inputs, completeness, transaction);
+    await storeRunStars(attempt.collaborationId, run.id, inputs, completenessPerStar, transaction);
     await reportProgress(attempt, 'store', 1, 1, transaction);
     await complete(transaction, attempt);
   });

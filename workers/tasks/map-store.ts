@@ -12,14 +12,12 @@ export interface MapToStore extends MapGrid {
   report: CoolingReport | Record<string, unknown>;
 }
 
-/** Stores maps that are not there yet; one that another attempt stored first is left as it is. */
-export async function storeMaps(
+/** What the row of a computed map holds. */
+export function rowOfMap(
   collaborationId: string,
-  maps: MapToStore[],
-  transaction: Transaction,
-): Promise<void> {
-  if (maps.length === 0) return;
-  const rows = maps.map(({ digest, completeness, inputs, report, ...grid }) => ({
+  { digest, completeness, inputs, report, ...grid }: MapToStore,
+) {
+  return {
     collaborationId,
     digest,
     origin: 'computed' as const,
@@ -30,7 +28,17 @@ export async function storeMaps(
     // Typed arrays as lists: JSON would write them as objects.
     inputs: JSON.parse(canonicalJson(inputs)),
     report: JSON.parse(canonicalJson(report)),
-  }));
+  };
+}
+
+/** Stores maps that are not there yet; one that another attempt stored first is left as it is. */
+export async function storeMaps(
+  collaborationId: string,
+  maps: MapToStore[],
+  transaction: Transaction,
+): Promise<void> {
+  if (maps.length === 0) return;
+  const rows = maps.map((map) => rowOfMap(collaborationId, map));
   await CompletenessMapRow.bulkCreate(rows, { ignoreDuplicates: true, transaction });
 }
 

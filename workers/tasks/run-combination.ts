@@ -39,9 +39,18 @@ export async function loadCombination(
     where: { collaborationId, id: definition.surveyIds },
     transaction,
   });
+  const { number, version, name, digest } = row;
+  return combinationOf({ id, number, version, name, digest, definition }, surveys);
+}
+
+/** A stored combination in words. */
+export function combinationOf(
+  row: Pick<CombinationRow, 'id' | 'number' | 'version' | 'name' | 'digest' | 'definition'>,
+  surveys: readonly { id: string; name: string }[],
+): StoredCombination {
+  const { id, number, version, name, digest, definition } = row;
   const names = new Map(surveys.map((survey) => [survey.id, survey.name]));
   const nameOf = (surveyId: string) => names.get(surveyId) ?? 'a deleted survey';
   const words = describeStoredCombination(definition, nameOf);
-  const { number, version, name, digest } = row;
   return { definition, words: { id, key: `C-${number}`, version, name, words, digest } };
 }

@@ -76,6 +76,15 @@ export async function mergeCompanions(
 ): Promise<MergedCompanions> {
   const targetIds = stars.flatMap(({ entries }) => entries.map(({ target }) => target.id));
   const rows = await CompanionRow.findAll({ where: { targetId: targetIds }, transaction });
+  return mergeRows(stars, population, rows);
+}
+
+/** The same of companions that were read already. */
+export function mergeRows(
+  stars: SampleStar[],
+  population: Population,
+  rows: readonly CompanionRow[],
+): MergedCompanions {
   const rowsOf = new Map<string, CompanionRow[]>();
   for (const row of rows) rowsOf.set(row.targetId, [...(rowsOf.get(row.targetId) ?? []), row]);
   const merged: MergedCompanions = { confirmed: [], undecided: [] };

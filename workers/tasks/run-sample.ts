@@ -2,6 +2,7 @@ import type { Transaction } from 'sequelize';
 import { InputError } from '@/lib/errors';
 import { findEmptySelection, listFirst } from '@/lib/queue/preconditions';
 import { refuseUndecided } from '@/lib/queue/undecided-pairs';
+import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
@@ -47,7 +48,7 @@ export interface Sample {
   adopted: NonNullable<RunInputs['adopted']>;
 }
 
-type LoadedTarget = TargetRow & { star: StarRow };
+export type LoadedTarget = TargetRow & { star: StarRow };
 
 async function loadSurveys(
   collaborationId: string,
@@ -68,6 +69,7 @@ async function loadSurveys(
       message: 'A survey that the analysis names is not there any more; choose its surveys again',
     });
   }
+  await refuseWithdrawn(collaborationId, surveyIds, transaction);
   const surveys: SampleSurvey[] = [];
   for (const row of rows) {
     const recipe = await loadRecipe(collaborationId, row.mapSettings, transaction);
@@ -125,11 +127,38 @@ export async function collectSample(
   }
   const selection = sampleId ? await loadSelection(collaborationId, sampleId, transaction) : null;
   const adopted = await loadAdopted(collaborationId, transaction);
-  const { targets, mapOf, curvesOf } = await loadTargets(
+  const loaded = await loadTargets(
     surveys.map(({ row }) => row.id),
     adopted,
     transaction,
   );
+  const sample = gatherSample({ surveys, combination, selection, adopted, ...loaded });
+  const nameOf = new Map(sample.stars.map(({ starId, name }) => [starId, name]));
+  await refuseUndecided(collaborationId, nameOf, transaction);
+  return sample;
+}
+
+/** Everything that a sample is gathered from, wherever it was read. */
+export interface SampleParts {
+  /** In the order that counts. */
+  surveys: SampleSurvey[];
+  combination: StoredCombination | null;
+  selection: Selection | null;
+  adopted: AdoptedValues;
+  /** With their stars and open candidates, adopted values applied. */
+  targets: LoadedTarget[];
+  mapOf: Map<string, CompletenessMapRow>;
+  /** By target; each list by digest. */
+  curvesOf: Map<string, ContrastCurveRow[]>;
+}
+
+/**
+ * The stars of a sample, every star once, and the entries that are left out.
+ *
+ * @throws InputError when no star is left, or when a star that should have a map has none
+ */
+export function gatherSample(parts: SampleParts): Sample {
+  const { surveys, combination, selection, adopted, targets, mapOf, curvesOf } = parts;
   const ordered = surveys.flatMap(({ row }) =>
     targets.filter(({ surveyId }) => surveyId === row.id).sort(byName),
   );
@@ -159,8 +188,6 @@ export async function collectSample(
   const nothing = findEmptySelection(stars.size, targets.length);
   if (nothing) throw new InputError(nothing);
   const ofStars = [...stars.values()].sort(byName);
-  const nameOf = new Map(ofStars.map(({ starId, name }) => [starId, name]));
-  await refuseUndecided(collaborationId, nameOf, transaction);
   return {
     surveys,
     stars: ofStars,

@@ -34,8 +34,17 @@ export async function loadSelection(
     where: { collaborationId, id: definition.surveyIds ?? [] },
     transaction,
   });
+  const { number, version, name, digest } = row;
+  return selectionOf({ id, number, version, name, digest, definition }, surveys);
+}
+
+/** A stored selection in words. */
+export function selectionOf(
+  row: Pick<SampleRow, 'id' | 'number' | 'version' | 'name' | 'digest' | 'definition'>,
+  surveys: readonly { id: string; name: string }[],
+): Selection {
+  const { id, number, version, name, digest, definition } = row;
   const names = new Map(surveys.map((survey) => [survey.id, survey.name]));
   const words = describeSample(definition, (surveyId) => names.get(surveyId) ?? 'a deleted survey');
-  const { number, version, name, digest } = row;
   return { definition, words: { id, key: `S-${number}`, version, name, words, digest } };
 }

@@ -1,13 +1,11 @@
 import { marginalWeights, type Population, type PopulationWeights } from '@/lib/population';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
-import { CompletenessMapRow } from '@/models';
 import { valuesOnGrid } from '@/models/map-on-grid';
+import type { PassingMap } from '@/models/map-stream';
+import type { MapShelf } from './map-shelf';
 import { flaggedMasses, type MapDigests } from './run-maps';
 import type { SampleStar } from './run-sample';
-
-/** Maps read at once: some megabytes. */
-const READ_AT_ONCE = 200;
 
 export interface MapStack {
   /** Shape [star, mass, semiMajorAxis], round(65535 C), on the run's grid. */
@@ -32,7 +30,7 @@ export interface MapStack {
  * @param hostMassMsun shape [star] [M_Sun], where the population depends on it
  */
 export async function stackMaps(
-  collaborationId: string,
+  shelf: Pick<MapShelf, 'stream'>,
   sampleStars: SampleStar[],
   digests: MapDigests,
   grid: MapGrid,
@@ -44,33 +42,23 @@ export async function stackMaps(
   const stars: MapStack['stars'] = [];
   const share = shareCounter(population, grid);
   const reach = reachOf(grid);
-  for (let start = 0; start < sampleStars.length; start += READ_AT_ONCE) {
-    const part = sampleStars.slice(start, start + READ_AT_ONCE);
-    const rows = await CompletenessMapRow.findAll({
-      where: {
-        collaborationId,
-        digest: part.map(({ starId }) => digests.get(starId) as string),
-      },
+  const keys = sampleStars.map(({ starId }) => digests.get(starId) as string);
+  await shelf.stream(keys, (map, place) => {
+    const star = sampleStars[place];
+    maps.set(valuesOnGrid(map, grid), place * size);
+    narrow(reach, map);
+    const host = hostMassMsun?.[place];
+    share.count(map, population.form === 'mass-ratio' ? host : undefined);
+    stars.push({
+      starId: star.starId,
+      name: star.name,
+      surveys: star.entries.map(({ survey }) => survey.row.id),
+      mapId: map.id,
+      mapDigest: map.digest,
+      mapChecksum: map.checksum,
+      ...(host !== undefined && { hostMassMsun: host }),
     });
-    const rowOf = new Map(rows.map((row) => [row.digest, row]));
-    part.forEach((star, i) => {
-      const row = rowOf.get(digests.get(star.starId) as string);
-      if (!row) throw new Error(`the map of ${star.name} is not stored`);
-      maps.set(valuesOnGrid(row, grid), (start + i) * size);
-      narrow(reach, row);
-      const host = hostMassMsun?.[start + i];
-      share.count(row, population.form === 'mass-ratio' ? host : undefined);
-      stars.push({
-        starId: star.starId,
-        name: star.name,
-        surveys: star.entries.map(({ survey }) => survey.row.id),
-        mapId: row.id,
-        mapDigest: row.digest,
-        mapChecksum: row.checksum,
-        ...(host !== undefined && { hostMassMsun: host }),
-      });
-    });
-  }
+  });
   return { maps, stars, reach, ...share.means() };
 }
 
@@ -83,8 +71,8 @@ function reachOf(grid: MapGrid): MapStack['reach'] {
   };
 }
 
-function narrow(reach: MapStack['reach'], row: CompletenessMapRow): void {
-  const last = <T>(axis: T[]) => axis[axis.length - 1];
+function narrow(reach: MapStack['reach'], row: PassingMap): void {
+  const last = (axis: Float64Array) => axis[axis.length - 1];
   reach.massMinMjup = Math.max(reach.massMinMjup, row.massMjup[0]);
   reach.massMaxMjup = Math.min(reach.massMaxMjup, last(row.massMjup));
   reach.semiMajorAxisMinAu = Math.max(reach.semiMajorAxisMinAu, row.semiMajorAxisAu[0]);
@@ -94,15 +82,17 @@ function narrow(reach: MapStack['reach'], row: CompletenessMapRow): void {
 /** Weights per axes and host mass: most maps of a run share theirs. */
 function shareCounter(population: Population, grid: MapGrid) {
   const known = new Map<string, PopulationWeights>();
-  const weightsOn = (massMjup: ArrayLike<number>, axisAu: ArrayLike<number>, host?: number) => {
-    const key = JSON.stringify([host, Array.from(massMjup), Array.from(axisAu)]);
+  const texts = new WeakMap<Float64Array, string>();
+  // Neighbours hold the same axis as one object, so that its text is made once.
+  const textOf = (axis: Float64Array) => {
+    const text = texts.get(axis) ?? axis.join();
+    texts.set(axis, text);
+    return text;
+  };
+  const weightsOn = (massMjup: Float64Array, semiMajorAxisAu: Float64Array, host?: number) => {
+    const key = `${host}|${textOf(massMjup)}|${textOf(semiMajorAxisAu)}`;
     const weights =
-      known.get(key) ??
-      marginalWeights(
-        { massMjup: Float64Array.from(massMjup), semiMajorAxisAu: Float64Array.from(axisAu) },
-        population,
-        host,
-      );
+      known.get(key) ?? marginalWeights({ massMjup, semiMajorAxisAu }, population, host);
     known.set(key, weights);
     return weights;
   };
@@ -110,7 +100,7 @@ function shareCounter(population: Population, grid: MapGrid) {
   let flagged = 0;
   let stars = 0;
   return {
-    count(row: CompletenessMapRow, host: number | undefined): void {
+    count(row: PassingMap, host: number | undefined): void {
       const common = weightsOn(grid.massMjup, grid.semiMajorAxisAu, host);
       const own = weightsOn(row.massMjup, row.semiMajorAxisAu, host);
       stars++;
