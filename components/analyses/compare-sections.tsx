@@ -57,7 +57,7 @@ export function ByLevel({ a, b }: { a: ComparedRun; b: ComparedRun }) {
   const chosen = (level: number) => Math.abs(level - a.result.credibleLevel) < 1e-9;
   return (
     <section className="min-w-0">
-      <SectionOpener number={3} title="By credible level" />
+      <SectionOpener number={3} title="By credible level" help="credible-level" />
       <Table caption="Upper limits of both by credible level, with their ratio">
         <TableHead>
           <tr>

@@ -18,7 +18,7 @@ export function DetectionsChoice({ chosen, surveys, onChange, children }: Detect
   const confirmed = surveys.reduce((total, survey) => total + survey.companions.confirmed, 0);
   return (
     <section>
-      <SectionOpener number={3} title="Detections" />
+      <SectionOpener number={3} title="Detections" help="detection" />
       <ConsequenceSwitch
         label="Detections counted"
         isLabelHidden

@@ -71,6 +71,7 @@ export function Estimate(props: EstimateProps) {
               },
               {
                 name: 'sum of detection probabilities',
+                help: 'exposure',
                 value: formatSignificant(estimate.exposure, 3),
                 note: `of ${estimate.stars}`,
               },

@@ -31,6 +31,7 @@ export function PopulationChoice(props: PopulationChoiceProps) {
       <SectionOpener
         number={2}
         title="Population"
+        help="population"
         context="how planets are spread in mass and semi-major axis"
       />
       {populations.length === 0 ? (

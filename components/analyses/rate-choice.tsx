@@ -29,9 +29,10 @@ export function RateChoice({ onChange, collaboration, surveyIds, ...setting }: R
   const { likelihood, prior, credibleLevel, background } = setting;
   return (
     <section>
-      <SectionOpener number={4} title="Likelihood, prior and level" />
+      <SectionOpener number={4} title="Likelihood, prior and level" help="prior" />
       <div className="grid gap-4">
         <ConsequenceSwitch
+          help="likelihood"
           label="What the rate counts"
           value={likelihood}
           onChange={(next) =>

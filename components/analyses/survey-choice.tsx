@@ -29,6 +29,7 @@ export function SurveyChoice(props: SurveyChoiceProps) {
       <SectionOpener
         number={1}
         title="Surveys"
+        help="survey"
         context={picked.length === 0 ? 'none chosen yet' : `${entries} entries, ${stars} stars`}
       />
       {surveys.length === 0 ? (

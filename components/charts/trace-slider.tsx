@@ -2,6 +2,8 @@
 
 import { scaleLinear } from 'd3';
 import { type KeyboardEvent, type ReactNode, useId, useRef, useState } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { areaPath, linePath, valueAt } from './paths';
@@ -33,6 +35,8 @@ export interface TraceSliderProps {
   levelWords?: string;
   /** Numbers under the track, where even steps would be wrong. */
   ticks?: number[];
+  /** The word that a mark behind the name explains. */
+  help?: HelpWord;
 }
 
 const height = 112;
@@ -94,9 +98,12 @@ export function TraceSlider(props: TraceSliderProps) {
   return (
     <div className="min-w-0">
       <div className="flex items-baseline justify-between gap-2 whitespace-nowrap text-ink2 text-note">
-        <label htmlFor={inputId} className="truncate">
-          {label ?? name}
-        </label>
+        <span className="flex min-w-0 items-baseline">
+          <label htmlFor={inputId} className="truncate">
+            {label ?? name}
+          </label>
+          {props.help !== undefined && <HelpMark word={props.help} />}
+        </span>
         <NumberOnDemand {...props} formatValue={formatValue} />
       </div>
       <div ref={measure} className="chart-control relative">

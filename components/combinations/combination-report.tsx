@@ -14,8 +14,8 @@ export function CombinationReport({ preview }: { preview: CombinationPreview }) 
       <FactsStrip
         facts={[
           { name: 'stars', value: stars },
-          { name: 'entries', value: entries },
-          { name: 'stars in several surveys', value: shared.length },
+          { name: 'entries', help: 'entry', value: entries },
+          { name: 'stars in several surveys', help: 'shared-stars', value: shared.length },
         ]}
       />
       <Table caption="What each survey adds, in order">

@@ -46,7 +46,7 @@ export function CoolingScreen({ collaboration, tables, canName }: CoolingScreenP
       />
       <div className="grid grid-cols-1 gap-8 pb-10">
         <section>
-          <SectionOpener number={1} title="Relations" />
+          <SectionOpener number={1} title="Relations" help="cooling-model" />
           <CoolingList tables={tables} shownId={id} builtInId={BUILT_IN} onShow={setId} />
         </section>
         {error !== undefined && (
@@ -60,6 +60,7 @@ export function CoolingScreen({ collaboration, tables, canName }: CoolingScreenP
               <SectionOpener
                 number={2}
                 title={`Tracks of ${relation.name}`}
+                help="cooling-start"
                 context={startWords(relation)}
               />
               <div className="mb-4 grid max-w-md grid-cols-2 gap-3">

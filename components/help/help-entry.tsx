@@ -51,7 +51,9 @@ export function HelpEntryPage({ word }: { word: HelpWord }) {
         </section>
       </div>
       <div className="min-w-0">
-        {figure !== undefined && <HelpFigure drawing={helpDrawing(figure)} title={title} />}
+        {figure !== undefined && (
+          <HelpFigure drawing={helpDrawing(figure)} word={word} title={title} />
+        )}
         <nav aria-label={helpGroups[group]} className="mt-7">
           <SectionOpener title={helpGroups[group]} />
           <ul className="columns-2 gap-6 text-note max-sm:columns-1">

@@ -46,12 +46,21 @@ function tablesOf({ x, y, curves }: HelpDrawing): ChartTable[] {
 }
 
 /** The drawing of a help entry in the grammar of all charts. */
-export function HelpFigure({ drawing, title }: { drawing: HelpDrawing; title: string }) {
+export function HelpFigure({
+  drawing,
+  word,
+  title,
+}: {
+  drawing: HelpDrawing;
+  word: string;
+  title: string;
+}) {
   const { x: across, y: up, curves, flag, caption } = drawing;
   const x = scaleOf(across, [plot.left, plot.right]);
   const y = scaleOf(up, [plot.bottom, plot.top]);
   return (
     <ChartFigure
+      name={word}
       label={`${title}: ${caption}`}
       width={WIDTH}
       height={HEIGHT}

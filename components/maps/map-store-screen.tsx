@@ -42,7 +42,7 @@ export function MapStoreScreen({ collaboration, initial }: MapStoreScreenProps) 
           </section>
           {shown && (
             <section>
-              <SectionOpener number={2} title={`Maps of ${shown.name}`} />
+              <SectionOpener number={2} title={`Maps of ${shown.name}`} help="completeness-map" />
               <SurveyMaps
                 key={shown.slug}
                 collaboration={collaboration}

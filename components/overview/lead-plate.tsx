@@ -1,5 +1,6 @@
 import Link from 'next/link';
 import { HistoryStaircase } from '@/components/charts/history-staircase';
+import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { Icon } from '@/components/ui/icon';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
@@ -44,6 +45,7 @@ export function LeadPlate({
         <div>
           <p className="text-[14px] text-ink3">
             Lead analysis, {lead.key}, run {run.number} of {dateOf(run.finishedAt ?? run.createdAt)}
+            <HelpMark word="upper-limit" />
           </p>
           <StatementNumber
             value={formatSignificant(100 * run.limit, 2)}
@@ -72,10 +74,15 @@ export function LeadPlate({
           <div className="mt-4">
             <Conditions
               rows={[
-                { name: 'Level', value: `${level}, credible` },
-                { name: 'Prior', value: describePrior(lead.recipe.prior, run.quantity) },
+                { name: 'Level', help: 'credible-level', value: `${level}, credible` },
+                {
+                  name: 'Prior',
+                  help: 'prior',
+                  value: describePrior(lead.recipe.prior, run.quantity),
+                },
                 {
                   name: 'Sample',
+                  help: 'detection',
                   value: `${run.stars} stars, ${detections} vetted ${detections === 1 ? 'detection' : 'detections'}`,
                 },
               ]}

@@ -139,6 +139,7 @@ export function OverviewScreen({
             <section>
               <SectionOpener
                 title="Analyses"
+                help="upper-limit"
                 context="upper limits; box: 68 % interval"
                 tools={can.addAnalysis && <Link href={`${base}/analyses/new`}>New analysis</Link>}
               />
@@ -153,6 +154,7 @@ export function OverviewScreen({
             <section>
               <SectionOpener
                 title="Overlaps"
+                help="shared-stars"
                 context={`${list.entries} entries, ${list.stars} stars`}
               />
               <OverlapChart list={list} />

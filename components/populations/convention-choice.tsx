@@ -44,6 +44,7 @@ export function ConventionChoice(props: ConventionChoiceProps) {
   return (
     <div className="mb-2.5 flex flex-wrap items-center gap-x-3 gap-y-1">
       <ConsequenceSwitch
+        help="index-convention"
         label={`What the index of ${axis === 'mass' ? 'the mass' : 'the semi-major axis'} is stated per`}
         isLabelHidden
         size="small"

@@ -29,6 +29,7 @@ export function FractionPart<S extends PreviewSetting>(props: FractionPartProps<
     >
       <div className="grid gap-3">
         <ConsequenceSwitch
+          help="occurrence-rate"
           label={
             <>
               Prior of <i>f</i>

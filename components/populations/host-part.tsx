@@ -34,6 +34,7 @@ export function HostPart(props: HostPartProps) {
   return (
     <BuilderPart number={number} title="Stars">
       <ConsequenceSwitch
+        help="host-mass-scaling"
         label="How the rate depends on the star"
         isLabelHidden
         isWide

@@ -53,6 +53,7 @@ export function PlaneSection({ sample, settled, here }: PlaneSectionProps) {
     <section className="mt-7">
       <SectionOpener
         title={`${level} limit over both indices`}
+        help="index-convention"
         context={`${countOf(present?.counted.length ?? 0)}; ${describePrior(prior, 'host_fraction')}; linear indices`}
       />
       {plane && present ? (

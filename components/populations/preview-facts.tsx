@@ -47,6 +47,7 @@ export function PreviewFacts({ answer, population, setting, stars }: PreviewFact
           },
           {
             name: 'expected detections',
+            help: 'detection-counts',
             label: (
               <>
                 {isSystems ? 'hosts found' : 'detections'} if <i>f</i> were{' '}

@@ -35,6 +35,7 @@ export function PreviewScatter(props: PreviewScatterProps) {
     <section>
       <SectionOpener
         title={title}
+        help="population"
         context={`over the ${subject}, from ${source}`}
         tools={
           <>

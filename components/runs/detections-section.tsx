@@ -24,7 +24,7 @@ export function DetectionsSection(props: DetectionsSectionProps) {
   const { companions, undecided, counted, outside, candidates, ofRun } = props;
   const answer = `${counted.length} counted of ${companions.length} confirmed, ${undecided.length} undecided`;
   return (
-    <FoldSection number={4} title="Detections" context={answer} answer={answer}>
+    <FoldSection number={4} title="Detections" help="detection" context={answer} answer={answer}>
       {companions.length + undecided.length === 0 ? (
         <p className="text-ink2 text-note">
           No companion of these stars is confirmed, and none is waiting for a verdict.

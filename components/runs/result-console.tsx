@@ -63,6 +63,7 @@ export function ResultConsole(props: ResultConsoleProps) {
     return (
       <TraceSlider
         {...names}
+        help="index-convention"
         trace={trace && asTrace(trace)}
         value={value}
         savedValue={savedValue}
@@ -86,6 +87,7 @@ export function ResultConsole(props: ResultConsoleProps) {
         <>
           <ConsequenceSwitch
             label="Detections counted"
+            help="detection"
             value={setting.detections}
             onChange={(detections) => onSetting({ ...setting, detections })}
             options={[
@@ -113,6 +115,7 @@ export function ResultConsole(props: ResultConsoleProps) {
           )}
           <ConsequenceSwitch
             label="Likelihood"
+            help="likelihood"
             value={setting.likelihood}
             onChange={(likelihood) => onSetting(withLikelihood(setting, likelihood, saved))}
             options={withConsequences(likelihoodOptions, (value) =>
@@ -121,6 +124,7 @@ export function ResultConsole(props: ResultConsoleProps) {
           />
           <div className={`max-md:w-full ${further}`}>
             <ConsequenceSwitch
+              help="prior"
               label={
                 quantity === 'host_fraction' ? (
                   <>
@@ -210,6 +214,7 @@ export function ResultConsole(props: ResultConsoleProps) {
       <ControlCell className={further}>
         <TraceSlider
           name="Credible level"
+          help="credible-level"
           trace={consequences && asTrace(percent(consequences.level))}
           value={tidy(100 * setting.credibleLevel)}
           savedValue={tidy(100 * saved.credibleLevel)}

@@ -1,6 +1,6 @@
-import type { ReactNode } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
-import { Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
+import { type ConditionRow, Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
 import {
   describeBackground,
   describeCandidates,
@@ -23,7 +23,7 @@ interface ResultStatementProps {
   mark?: string;
   /** Ends of the maps. */
   bounds: { mass: [number, number]; axis: [number, number] };
-  conditions: { name: string; value: ReactNode }[];
+  conditions: ConditionRow[];
   /** Read out when the number has been still for a while. */
   announced: string;
   onDefinition(definition: PowerLawDefinition): void;
@@ -40,6 +40,7 @@ export function ResultStatement(props: ResultStatementProps) {
         {answer.isConstrained
           ? `Upper limit, ${describeLevel(setting.credibleLevel)} credible level`
           : 'No limit'}
+        <HelpMark word="upper-limit" />
         {mark === 'live' ? (
           <LiveMark />
         ) : (
@@ -117,41 +118,60 @@ interface ConditionInputs {
 }
 
 /** Name and value, line by line, from the setting and never from a stored text. */
-export function conditionRows(inputs: ConditionInputs): { name: string; value: ReactNode }[] {
+export function conditionRows(inputs: ConditionInputs): ConditionRow[] {
   const { setting, quantity, stars, answer, atTenthOfFloor, shareOutsideMaps } = inputs;
-  const rows: { name: string; value: ReactNode }[] = [
-    { name: 'Prior', value: describePrior(setting.prior, quantity) },
-    { name: 'Population', value: <PowerLaws definition={setting.definition} /> },
+  const rows: ConditionRow[] = [
+    { name: 'Prior', help: 'prior', value: describePrior(setting.prior, quantity) },
+    {
+      name: 'Population',
+      help: 'population',
+      value: <PowerLaws definition={setting.definition} />,
+    },
     {
       name: 'Likelihood',
+      help: 'likelihood',
       value:
         quantity === 'host_fraction'
           ? `host fraction, binomial over ${stars} stars`
           : `mean number of planets, Poisson over ${stars} stars`,
     },
-    { name: 'Detections', value: detectionWords(inputs) },
+    { name: 'Detections', help: 'detection', value: detectionWords(inputs) },
   ];
   if (inputs.candidates) {
-    rows.push({ name: 'Candidates', value: describeCandidates(inputs.candidates) });
+    rows.push({
+      name: 'Candidates',
+      help: 'undecided-candidates',
+      value: describeCandidates(inputs.candidates),
+    });
   }
   if (setting.background !== undefined) {
-    rows.push({ name: 'Background', value: describeBackground(setting.background) });
+    rows.push({
+      name: 'Background',
+      help: 'false-detections',
+      value: describeBackground(setting.background),
+    });
   }
-  rows.push({ name: 'Cooling', value: inputs.cooling });
+  rows.push({ name: 'Cooling', help: 'cooling-model', value: inputs.cooling });
   if (shareOutsideMaps > 0.0005) {
     rows.push({
       name: 'Outside',
+      help: 'share-outside',
       value: `${formatPercent(shareOutsideMaps)} of the population lies beyond the maps and counts as never seen`,
     });
   }
   if (atTenthOfFloor !== null) {
     rows.push({
       name: 'Floor',
+      help: 'log-uniform-prior',
       value: `at a tenth of it the limit would be <${formatRate(atTenthOfFloor, quantity)}`,
     });
   }
   if (answer.isConstrained && answer.isSetByPrior) {
-    rows.push({ name: 'Note', value: 'the limit is set by the prior, not by the data' });
+    rows.push({
+      name: 'Note',
+      help: 'set-by-the-prior',
+      value: 'the limit is set by the prior, not by the data',
+    });
   }
   return rows;
 }

@@ -27,6 +27,7 @@ export function SensitivitySection(props: SensitivitySectionProps) {
     <FoldSection
       number={2}
       title="Sensitivity"
+      help="depth-of-search"
       answer={`${formatSignificant(exposure, 3)} stars’ worth of detection probability`}
       tools={<RampKey label={`mean detection probability, ${stars} stars`} />}
     >

@@ -78,7 +78,7 @@ export function AgesScreen(props: AgesScreenProps) {
       <Conflicts {...props} index={0} />
       <Conflicts {...props} index={1} />
       <section>
-        <SectionOpener title="Tables" context="newest first" />
+        <SectionOpener title="Tables" help="adopted-values" context="newest first" />
         {tables.length === 0 ? (
           <p className="py-2 text-ink3">Nothing was adopted yet.</p>
         ) : (

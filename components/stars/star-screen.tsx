@@ -138,7 +138,7 @@ export function StarScreen({
         </section>
       )}
       <section className="mb-9">
-        <SectionOpener title="Completeness maps" context="one a survey" />
+        <SectionOpener title="Completeness maps" help="completeness-map" context="one a survey" />
         <div className="grid gap-x-10 gap-y-6 md:grid-cols-2 xl:grid-cols-3">
           {star.entries.map((entry) => (
             <EntryMap key={entry.targetId} collaboration={collaboration} entry={entry} />

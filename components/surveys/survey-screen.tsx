@@ -41,14 +41,25 @@ function factsOf(survey: SurveyView): Fact[] {
   const open = companions.candidate + companions.ambiguous;
   return [
     { name: 'targets', value: survey.targets },
-    { name: 'contrast curves', value: survey.curves },
-    { name: 'maps ready', value: survey.maps.ready, note: `of ${survey.targets}` },
-    { name: 'also in another survey', value: survey.alsoInAnother },
-    { name: 'vetted detections', value: companions.confirmed },
-    { name: 'open candidates', value: open },
+    { name: 'contrast curves', help: 'contrast-curve', value: survey.curves },
+    {
+      name: 'maps ready',
+      help: 'completeness-map',
+      value: survey.maps.ready,
+      note: `of ${survey.targets}`,
+    },
+    { name: 'also in another survey', help: 'star', value: survey.alsoInAnother },
+    { name: 'vetted detections', help: 'detection', value: companions.confirmed },
+    { name: 'open candidates', help: 'candidate', value: open },
     ...(survey.summedCompleteness === null
       ? []
-      : [{ name: 'sum of detection probabilities', value: survey.summedCompleteness.toFixed(1) }]),
+      : [
+          {
+            name: 'sum of detection probabilities',
+            help: 'exposure' as const,
+            value: survey.summedCompleteness.toFixed(1),
+          },
+        ]),
   ];
 }
 

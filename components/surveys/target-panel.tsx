@@ -188,6 +188,7 @@ export function TargetPanel(props: TargetPanelProps) {
         <section>
           <SectionOpener
             title="Contrast curves"
+            help="contrast-curve"
             context={`${curves.length} targets`}
             tools={nSigma && `${nSigma} σ`}
             level={3}
@@ -202,6 +203,7 @@ export function TargetPanel(props: TargetPanelProps) {
       <section>
         <SectionOpener
           title="Completeness map"
+          help="completeness"
           context={stored?.origin === 'uploaded' ? 'as uploaded' : 'this star'}
           level={3}
         />

@@ -1,6 +1,8 @@
 'use client';
 
 import { type ReactNode, useId } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 
 export interface SwitchOption<Value extends string> {
   value: Value;
@@ -20,6 +22,8 @@ interface ConsequenceSwitchProps<Value extends string> {
   size?: 'normal' | 'small';
   /** Options share the whole width, as on a narrow screen. */
   isWide?: boolean;
+  /** The word that a mark behind the label explains. */
+  help?: HelpWord;
 }
 
 /** Options in a row; each carries the consequence of choosing it. Real radio buttons beneath. */
@@ -31,11 +35,19 @@ export function ConsequenceSwitch<Value extends string>({
   isLabelHidden = false,
   size = 'normal',
   isWide = false,
+  help,
 }: ConsequenceSwitchProps<Value>) {
   const name = useId();
+  const labelId = useId();
   return (
-    <fieldset className={`min-w-0 ${isWide ? 'w-full' : 'max-md:w-full'}`}>
-      <legend className={isLabelHidden ? 'sr-only' : 'mb-1 text-ink2 text-note'}>{label}</legend>
+    <fieldset
+      aria-labelledby={help === undefined ? undefined : labelId}
+      className={`min-w-0 ${isWide ? 'w-full' : 'max-md:w-full'}`}
+    >
+      <legend className={isLabelHidden ? 'sr-only' : 'mb-1 text-ink2 text-note'}>
+        <span id={labelId}>{label}</span>
+        {help !== undefined && <HelpMark word={help} />}
+      </legend>
       <div
         className={`rounded border border-rule2 bg-surface text-note ${isWide ? 'flex' : 'flex w-full md:inline-flex md:w-auto'}`}
       >

@@ -1,4 +1,6 @@
 import type { ReactNode } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 
 export interface Fact {
   /** A key; the name in plain words. */
@@ -10,6 +12,8 @@ export interface Fact {
   label?: ReactNode;
   /** A limit: set in the colour of the bound. */
   isBound?: boolean;
+  /** The word that a mark behind the name explains. */
+  help?: HelpWord;
 }
 
 /** Large figures with their names below; they wrap on a narrow screen. */
@@ -21,7 +25,10 @@ export function FactsStrip({ facts }: { facts: Fact[] }) {
           key={fact.name}
           className="flex flex-col-reverse justify-end border-rule md:border-l md:px-[26px] md:first:border-l-0 md:first:pl-0"
         >
-          <dt className="text-ink3 text-note">{fact.label ?? fact.name}</dt>
+          <dt className="text-ink3 text-note">
+            {fact.label ?? fact.name}
+            {fact.help !== undefined && <HelpMark word={fact.help} />}
+          </dt>
           <dd className={`font-semibold text-figure ${fact.isBound ? 'text-bound' : ''}`}>
             {fact.value}
             {fact.note !== undefined && (

@@ -1,6 +1,8 @@
 'use client';
 
 import { type ReactNode, useId, useState } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 import { Icon } from './icon';
 import { SectionOpener } from './section-opener';
 
@@ -13,17 +15,19 @@ interface FoldSectionProps {
   answer: ReactNode;
   children: ReactNode;
   id?: string;
+  /** The word that a mark behind the title explains. */
+  help?: HelpWord;
 }
 
 /** A section that is open on wide screens and folds to its answer below 768 px. */
 export function FoldSection(props: FoldSectionProps) {
-  const { number, title, context, tools, answer, children, id } = props;
+  const { number, title, context, tools, answer, children, id, help } = props;
   const [isOpen, setOpen] = useState(false);
   const bodyId = useId();
   return (
     <section id={id}>
       <div className="max-md:hidden">
-        <SectionOpener number={number} title={title} context={context} tools={tools} />
+        <SectionOpener number={number} title={title} context={context} tools={tools} help={help} />
       </div>
       <h2 className="border-rule border-b md:hidden">
         <button
@@ -42,8 +46,11 @@ export function FoldSection(props: FoldSectionProps) {
         </button>
       </h2>
       <div id={bodyId} className={isOpen ? 'max-md:py-4' : 'max-md:hidden'}>
-        {tools !== undefined && (
-          <div className="mb-3 flex flex-wrap gap-3 text-note md:hidden">{tools}</div>
+        {(tools !== undefined || help !== undefined) && (
+          <div className="mb-3 flex flex-wrap gap-3 text-note md:hidden">
+            {help !== undefined && <HelpMark word={help} />}
+            {tools}
+          </div>
         )}
         {children}
       </div>

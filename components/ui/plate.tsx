@@ -1,4 +1,6 @@
 import type { ReactNode } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 
 /** The one dark surface of the light theme: holds one statement, at most one a page. */
 export function Plate({
@@ -48,13 +50,23 @@ export function StatementNumber({
   );
 }
 
+export interface ConditionRow {
+  name: string;
+  value: ReactNode;
+  /** The word that a mark behind the name explains. */
+  help?: HelpWord;
+}
+
 /** What the number rests on: name and value, line by line. */
-export function Conditions({ rows }: { rows: { name: string; value: ReactNode }[] }) {
+export function Conditions({ rows }: { rows: ConditionRow[] }) {
   return (
     <dl className="grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-[3px] text-ink2 text-note">
       {rows.map((row) => (
         <div key={row.name} className="contents">
-          <dt className="text-ink3">{row.name}</dt>
+          <dt className="whitespace-nowrap text-ink3">
+            {row.name}
+            {row.help !== undefined && <HelpMark word={row.help} />}
+          </dt>
           <dd>{row.value}</dd>
         </div>
       ))}

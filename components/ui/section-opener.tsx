@@ -1,4 +1,6 @@
 import type { ReactNode } from 'react';
+import { HelpMark } from '@/components/help/help-mark';
+import type { HelpWord } from '@/lib/help';
 import { LogTicks } from './log-ticks';
 
 export interface SectionOpenerProps {
@@ -11,6 +13,8 @@ export interface SectionOpenerProps {
   tools?: ReactNode;
   id?: string;
   level?: 2 | 3;
+  /** The word that a mark behind the title explains. */
+  help?: HelpWord;
 }
 
 export function SectionOpener({
@@ -20,6 +24,7 @@ export function SectionOpener({
   tools,
   id,
   level = 2,
+  help,
 }: SectionOpenerProps) {
   const Heading = level === 2 ? 'h2' : 'h3';
   return (
@@ -30,6 +35,7 @@ export function SectionOpener({
           {number !== undefined && <span className="mr-[9px] font-normal text-ink3">{number}</span>}
           {title}
         </Heading>
+        {help !== undefined && <HelpMark word={help} className="-ml-2.5 self-center" />}
         {context !== undefined && <p className="text-ink2 text-note">{context}</p>}
         {tools !== undefined && (
           <div className="ml-auto flex flex-wrap items-center gap-3 text-note">{tools}</div>

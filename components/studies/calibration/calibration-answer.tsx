@@ -36,6 +36,7 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
           { name: 'surveys invented', value: result.surveys },
           {
             name: 'chance of ranks this uneven',
+            help: 'calibration',
             value: chance(ranks.pValue),
             note: `at least ${LEAST_P}`,
           },
@@ -59,6 +60,7 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
         <section className="min-w-0">
           <SectionOpener
             title="How often limits hold"
+            help="coverage"
             level={3}
             context="truth drawn from the prior"
           />

@@ -14,7 +14,7 @@ export function CountsAnswer({ asked, result }: AnswerProps<'counts'>) {
     <>
       <FactsStrip
         facts={[
-          { name: 'counted', value: result.counted },
+          { name: 'counted', help: 'detection-counts', value: result.counted },
           {
             name: asked.quantity === 'host_fraction' ? 'host fraction' : 'rate',
             value: formatRate(result.rate, asked.quantity),

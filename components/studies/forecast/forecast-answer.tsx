@@ -28,6 +28,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
         facts={[
           {
             name: 'detections expected',
+            help: 'forecast',
             value: formatSignificant(result.yield.mean, 2),
             note: few === many ? `most likely ${few}` : `68\u2009%: ${few} to ${many}`,
           },
@@ -46,6 +47,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
           },
           {
             name: 'stars’ worth of sensitivity',
+            help: 'exposure',
             value: formatPlain(result.exposure, 3),
             note: `of ${result.stars} stars`,
           },
@@ -53,7 +55,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
       />
       <div className="mt-7 grid gap-x-12 gap-y-8 xl:grid-cols-2">
         <section className="min-w-0">
-          <SectionOpener title="How many would be found" level={3} />
+          <SectionOpener title="How many would be found" help="detection-counts" level={3} />
           <YieldChart
             distribution={result.distribution}
             mean={result.yield.mean}
@@ -62,7 +64,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
           />
         </section>
         <section className="min-w-0">
-          <SectionOpener title="How many stars it takes" level={3} />
+          <SectionOpener title="How many stars it takes" help="stars-needed" level={3} />
           <LimitByStarsChart
             {...result.against}
             wanted={result.wantedLimit}
@@ -75,6 +77,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
       </div>
       <section className="mt-8 min-w-0">
         <SectionOpener
+          help="gain"
           title={result.gain.length > 20 ? 'Which 20 stars next' : 'Which stars next'}
           level={3}
           context="each added alone to what the run knows, nothing found"

@@ -47,6 +47,7 @@ export function OverlapAnswer({ asked, result }: AnswerProps<'overlap-rules'>) {
         <SectionOpener
           level={3}
           title="Shared stars"
+          help="shared-stars"
           context={`${result.shared.length}, with their detection probability under each rule`}
         />
         <SharedStars shared={result.shared} />
