@@ -51,7 +51,12 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
           onDefinition={props.onDefinition}
         />
         <div className="grid min-w-0 content-start md:gap-y-8">
-          <FoldSection number={3} title="Limits by credible level" answer={levelsInWords(shown)}>
+          <FoldSection
+            number={3}
+            title="Limits by credible level"
+            help="credible-level"
+            answer={levelsInWords(shown)}
+          >
             <LevelTable
               levels={shown.levels()}
               credibleLevel={setting.credibleLevel}

@@ -120,7 +120,12 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
         </section>
         <div className="grid min-w-0 content-start gap-8">
           <section className="min-w-0">
-            <SectionOpener number={2} title="What it holds" context="now, before it is saved" />
+            <SectionOpener
+              number={2}
+              title="What it holds"
+              help="sample"
+              context="now, before it is saved"
+            />
             {error !== undefined && (
               <Notice tone="bad" title="It could not be counted.">
                 {sentenceOf(error)}
