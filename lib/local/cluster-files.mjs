@@ -30,7 +30,8 @@ const versionsFolder = '/usr/lib/postgresql';
  * @property {{ id: string, port: number, password: string, superuserPassword: string }} connection
  */
 
-function newestBinaries() {
+/** @returns {string | null} the folder of the newest PostgreSQL programs on this machine */
+export function newestBinaries() {
   if (!existsSync(versionsFolder)) return null;
   const versions = readdirSync(versionsFolder)
     .filter((name) => existsSync(path.join(versionsFolder, name, 'bin/initdb')))
