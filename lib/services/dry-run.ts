@@ -1,10 +1,18 @@
+import { Op } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { InputError, NotFound } from '@/lib/errors';
-import type { KnownMap, Note, ReadContext, ReadResult, UploadKind } from '@/lib/formats';
+import {
+  foldName,
+  type KnownMap,
+  type Note,
+  type ReadContext,
+  type ReadResult,
+  type UploadKind,
+} from '@/lib/formats';
 import type { UploadReport, UploadSettings } from '@/lib/schemas/uploads';
-import { BUILT_IN_LAW_BANDS } from '@/lib/sensitivity';
-import { CompletenessMapRow, CoolingTableRow, type SurveyRow, TargetRow } from '@/models';
-import { unpackMap } from '@/models/map-values';
+import { BUILT_IN_LAW_BANDS, decodeMap } from '@/lib/sensitivity';
+import { CoolingTableRow, type SurveyRow, TargetRow } from '@/models';
+import { streamMaps } from '@/models/map-stream';
 import { recallMapping } from './column-memory';
 import { planCompanions } from './intake/companions';
 import { planCompletenessMaps } from './intake/completeness-maps';
@@ -31,21 +39,21 @@ async function bandsOf(survey: SurveyRow): Promise<string[]> {
   return table ? Object.keys(table.magnitudes) : [];
 }
 
-async function mapsByName(targets: TargetRow[]): Promise<Map<string, KnownMap>> {
-  const rows = await CompletenessMapRow.findAll({
-    where: { id: targets.flatMap((target) => (target.mapId ? [target.mapId] : [])) },
+/** Maps of the targets that a file names: a large survey's maps together would fill the memory. */
+async function mapsByName(survey: SurveyRow, named: string[]): Promise<Map<string, KnownMap>> {
+  const targets = await TargetRow.findAll({
+    attributes: ['name', 'mapId'],
+    where: { surveyId: survey.id, foldedName: named.map(foldName), mapId: { [Op.not]: null } },
   });
-  const byId = new Map(rows.map((row) => [row.id, row]));
   const maps = new Map<string, KnownMap>();
-  for (const target of targets) {
-    const row = target.mapId ? byId.get(target.mapId) : undefined;
-    if (!row) continue;
-    maps.set(target.name, {
-      massMjup: row.massMjup,
-      semiMajorAxisAu: row.semiMajorAxisAu,
-      completeness: [...unpackMap(row.nodeValues)],
+  const keys = targets.map(({ mapId }) => mapId as string);
+  await streamMaps(survey.collaborationId, { by: 'id', keys }, (map, place) => {
+    maps.set(targets[place].name, {
+      massMjup: [...map.massMjup],
+      semiMajorAxisAu: [...map.semiMajorAxisAu],
+      completeness: [...decodeMap(map.encoded)],
     });
-  }
+  });
   return maps;
 }
 
@@ -70,8 +78,17 @@ async function contextOf(source: Source): Promise<ReadContext> {
     context.bands = await bandsOf(survey);
     context.defaultBand = survey.band;
   }
-  if (kind === 'companions') context.maps = await mapsByName(targets);
   return context;
+}
+
+/** Reads a file; one of companions twice, as its notes need the maps of the stars that it names. */
+async function readSource(source: Source, bytes: Buffer): Promise<ReadResult> {
+  const context = await contextOf(source);
+  const read = await readOnThread(bytes, context);
+  if (!source.survey || !read.ok || read.kind !== 'companions') return read;
+  const named = new Set(read.records.map(({ target }) => target));
+  const maps = await mapsByName(source.survey, [...named]);
+  return maps.size === 0 ? read : readOnThread(bytes, { ...context, maps });
 }
 
 async function planOf(
@@ -118,13 +135,13 @@ interface Reading {
 
 /** Where the person has mapped nothing, the mapping of the last file with these headings holds. */
 async function readAsBefore(source: Source, bytes: Buffer): Promise<Reading> {
-  const read = await readOnThread(bytes, await contextOf(source));
+  const read = await readSource(source, bytes);
   const isOwn = source.settings.columnMap !== undefined;
   const remembered = isOwn ? null : await recallMapping(source.survey, source.kind, read.columns);
   if (!remembered) return { read, source, remembered };
   const settings = { ...source.settings, columnMap: remembered.columnMap };
   const mapped = { ...source, settings };
-  return { read: await readOnThread(bytes, await contextOf(mapped)), source: mapped, remembered };
+  return { read: await readSource(mapped, bytes), source: mapped, remembered };
 }
 
 function describeMapping(columnMap: Record<string, string>): Note {

@@ -10,17 +10,11 @@ import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { idSchema } from '@/lib/schemas/common';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
-import {
-  AnalysisRow,
-  CompletenessMapRow,
-  database,
-  inTransaction,
-  JobRow,
-  PopulationRow,
-  RunRow,
-} from '@/models';
+import { AnalysisRow, database, inTransaction, JobRow, PopulationRow, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import { valuesOnGrid } from '@/models/map-on-grid';
+import { MissingMap, streamMaps } from '@/models/map-stream';
+import { ownBytes } from '@/models/map-values';
 import { findAnalysis } from './analysis-lookup';
 import { recordAudit } from './audit';
 import { describeJobs } from './jobs';
@@ -182,9 +176,6 @@ export interface RunMaps {
   digest: string;
 }
 
-/** Maps read at once: some megabytes. */
-const READ_AT_ONCE = 200;
-
 /** The maps of all stars of a finished run on its grid: what its page computes from. */
 export async function getRunMaps(actor: Actor, id: string): Promise<RunMaps> {
   const run = await findRun(actor, id);
@@ -196,21 +187,15 @@ export async function getRunMaps(actor: Actor, id: string): Promise<RunMaps> {
   };
   const shape: RunMaps['shape'] = [stars.length, axes.massMjup.length, axes.semiMajorAxisAu.length];
   const size = shape[1] * shape[2];
-  const bytes = Buffer.alloc(2 * stars.length * size);
-  for (let start = 0; start < stars.length; start += READ_AT_ONCE) {
-    const part = stars.slice(start, start + READ_AT_ONCE);
-    const rows = await CompletenessMapRow.findAll({
-      where: { collaborationId: actor.collaborationId, id: part.map(({ mapId }) => mapId) },
+  const values = new Uint16Array(stars.length * size);
+  const keys = stars.map(({ mapId }) => mapId);
+  try {
+    await streamMaps(actor.collaborationId, { by: 'id', keys }, (map, place) => {
+      values.set(valuesOnGrid(map, axes), place * size);
     });
-    const rowOf = new Map(rows.map((row) => [row.id, row]));
-    part.forEach(({ mapId, name }, i) => {
-      const row = rowOf.get(mapId);
-      if (!row) throw new NotFound(`map of ${name}`);
-      const offset = (start + i) * size;
-      valuesOnGrid(row, axes).forEach((value, cell) => {
-        bytes.writeUInt16LE(value, 2 * (offset + cell));
-      });
-    });
+  } catch (error) {
+    if (!(error instanceof MissingMap)) throw error;
+    throw new NotFound(`map of ${stars.find(({ mapId }) => mapId === error.key)?.name}`);
   }
-  return { bytes, shape, digest: run.inputsDigest };
+  return { bytes: ownBytes(values), shape, digest: run.inputsDigest };
 }

@@ -6,9 +6,9 @@ import {
   type ShapedPopulation,
 } from '@/lib/population';
 import type { MapSettings } from '@/lib/schemas/surveys';
-import { type MapGrid, regridNodes } from '@/lib/sensitivity';
-import { CompletenessMapRow, PopulationRow } from '@/models';
-import { unpackMap } from '@/models/map-values';
+import { decodeMap, type MapGrid, regridNodes } from '@/lib/sensitivity';
+import { PopulationRow } from '@/models';
+import { type PassingMap, streamMaps } from '@/models/map-stream';
 
 /** One map seen through a population: its mean, and its profile along semi-major axis. */
 interface MapSummary {
@@ -17,8 +17,10 @@ interface MapSummary {
   profile: Float64Array;
 }
 
-/** Enough for some twenty surveys of 300 stars under one population; the oldest entry goes first. */
-const CACHE_SIZE = 6000;
+/** Enough for four surveys of 5000 stars, some 25 MB; the oldest entry goes first. */
+const CACHE_SIZE = 20_000;
+/** Other requests get their turn between two parts. */
+const READ_AT_ONCE = 100;
 const cache = new Map<string, MapSummary>();
 
 /** Shape for surveys of a collaboration that has shared no population yet: flat in both logarithms. */
@@ -61,23 +63,22 @@ export async function currentYardstick(collaborationId: string): Promise<Yardsti
     : { population: FLAT, key: 'flat', isShared: false };
 }
 
-function summarise(row: CompletenessMapRow, yardstick: Yardstick, grid: MapGrid): MapSummary {
-  const own = {
-    massMjup: Float64Array.from(row.massMjup),
-    semiMajorAxisAu: Float64Array.from(row.semiMajorAxisAu),
-    completeness: unpackMap(row.nodeValues),
-  };
-  const { map } = regridNodes(own, grid);
-  const weights = populationWeights(grid, yardstick.population);
+/** Sees maps through one population, on one grid. */
+function summariser({ population }: Yardstick, grid: MapGrid): (map: PassingMap) => MapSummary {
+  const weights = populationWeights(grid, population);
   const columns = grid.semiMajorAxisAu.length;
-  const profile = new Float64Array(columns);
-  weights.mass.forEach((weight, i) => {
-    if (weight === 0) return;
-    for (let j = 0; j < columns; j++) profile[j] += weight * map.completeness[i * columns + j];
-  });
-  let probability = 0;
-  for (let j = 0; j < columns; j++) probability += weights.semiMajorAxis[j] * profile[j];
-  return { probability, profile };
+  return (map) => {
+    const completeness = decodeMap(map.encoded);
+    const regridded = regridNodes({ ...map, completeness }, grid).map.completeness;
+    const profile = new Float64Array(columns);
+    weights.mass.forEach((weight, i) => {
+      if (weight === 0) return;
+      for (let j = 0; j < columns; j++) profile[j] += weight * regridded[i * columns + j];
+    });
+    let probability = 0;
+    for (let j = 0; j < columns; j++) probability += weights.semiMajorAxis[j] * profile[j];
+    return { probability, profile };
+  };
 }
 
 /** The grid on which a survey's maps are made. */
@@ -98,11 +99,12 @@ export async function summariseMaps(
   const gridKey = `${grid.massMjup.length}x${grid.semiMajorAxisAu.length}:${grid.semiMajorAxisAu[0]}:${grid.semiMajorAxisAu.at(-1)}:${grid.massMjup[0]}:${grid.massMjup.at(-1)}`;
   const keyOf = (id: string) => `${id}|${yardstick.key}|${gridKey}`;
   const missing = [...new Set(mapIds)].filter((id) => !cache.has(keyOf(id)));
-  for (let start = 0; start < missing.length; start += 100) {
-    const rows = await CompletenessMapRow.findAll({
-      where: { collaborationId, id: missing.slice(start, start + 100) },
+  const summarise = summariser(yardstick, grid);
+  for (let start = 0; start < missing.length; start += READ_AT_ONCE) {
+    const keys = missing.slice(start, start + READ_AT_ONCE);
+    await streamMaps(collaborationId, { by: 'id', keys, gaps: 'skip' }, (map) => {
+      cache.set(keyOf(map.id), summarise(map));
     });
-    for (const row of rows) cache.set(keyOf(row.id), summarise(row, yardstick, grid));
   }
   const found = new Map<string, MapSummary>();
   for (const id of mapIds) {

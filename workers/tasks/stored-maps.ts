@@ -1,9 +1,6 @@
 import type { MapGrid } from '@/lib/sensitivity';
-import { CompletenessMapRow } from '@/models';
 import { valuesOnGrid } from '@/models/map-on-grid';
-
-/** Maps read at once: some megabytes. */
-const READ_AT_ONCE = 200;
+import { streamMaps } from '@/models/map-stream';
 
 /**
  * Stored maps on one grid, one for each digest in order, encoded as a run integrates them.
@@ -17,15 +14,8 @@ export async function readMaps(
 ): Promise<Uint16Array> {
   const size = grid.massMjup.length * grid.semiMajorAxisAu.length;
   const maps = new Uint16Array(digests.length * size);
-  for (let start = 0; start < digests.length; start += READ_AT_ONCE) {
-    const part = digests.slice(start, start + READ_AT_ONCE);
-    const rows = await CompletenessMapRow.findAll({ where: { collaborationId, digest: part } });
-    const rowOf = new Map(rows.map((row) => [row.digest, row]));
-    part.forEach((digest, i) => {
-      const row = rowOf.get(digest);
-      if (!row) throw new Error(`the map ${digest} is not stored`);
-      maps.set(valuesOnGrid(row, grid), (start + i) * size);
-    });
-  }
+  await streamMaps(collaborationId, { by: 'digest', keys: digests }, (map, place) => {
+    maps.set(valuesOnGrid(map, grid), place * size);
+  });
   return maps;
 }
