@@ -38,17 +38,18 @@ interface NewAnalysisProps {
   wanted?: string;
   /** Stored combination asked for in the address. */
   stored?: CombinationView;
+  /** What the settings of the collaboration say that new analyses begin with. */
+  usual: Pick<AnalysisRecipe, 'credibleLevel' | 'combination'>;
 }
 
-const FIRST_RATE: RateSetting = {
+const FIRST_RATE: Omit<RateSetting, 'credibleLevel'> = {
   likelihood: 'host-fraction',
   prior: { law: 'uniform', max: 1 },
-  credibleLevel: 0.95,
 };
 
 /** One page, four choices with sensible defaults, and what they would give. */
 export function NewAnalysis(props: NewAnalysisProps) {
-  const { collaboration, surveys, populations, previewRun, wanted, stored } = props;
+  const { collaboration, surveys, populations, previewRun, wanted, stored, usual } = props;
   const router = useRouter();
   const offered = surveys.surveys.filter((survey) => !survey.isArchived);
   const ready = offered.filter((survey) => survey.maps.ready > 0);
@@ -64,10 +65,13 @@ export function NewAnalysis(props: NewAnalysisProps) {
   const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
   const [candidates, setCandidates] = useState<AnalysisRecipe['candidates']>();
   const [combination, setCombination] = useState<AnalysisRecipe['combination']>(
-    stored?.definition.rule ?? 'default',
+    stored?.definition.rule ?? usual.combination,
   );
   const [sampleId, setSampleId] = useState<string>();
-  const [rate, setRate] = useState<RateSetting>(FIRST_RATE);
+  const [rate, setRate] = useState<RateSetting>({
+    ...FIRST_RATE,
+    credibleLevel: usual.credibleLevel,
+  });
   const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
   const [ownName, setOwnName] = useState<string>();
   const [busy, setBusy] = useState<'create' | 'run'>();

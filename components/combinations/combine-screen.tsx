@@ -33,14 +33,22 @@ interface CombineScreenProps {
   surveys: SurveyView[];
   initial: CombinationView[];
   canCombine: boolean;
+  /** The rule that a new combination begins with. */
+  usualRule: CombinationDefinition['rule'];
 }
 
 /** Several surveys as one sample: order, rule for shared stars, grid, and what each survey adds. */
-export function CombineScreen({ collaboration, surveys, initial, canCombine }: CombineScreenProps) {
+export function CombineScreen({
+  collaboration,
+  surveys,
+  initial,
+  canCombine,
+  usualRule,
+}: CombineScreenProps) {
   const { data: combinations = initial, mutate } = useCombinations(collaboration, initial);
   const [draft, setDraft] = useState<CombinationDefinition>({
     surveyIds: surveys.map(({ id }) => id),
-    rule: 'default',
+    rule: usualRule,
     starRules: [],
     grid: { choice: 'common' },
   });

@@ -17,6 +17,8 @@ export interface KnownPerson {
   tokenId?: string;
   /** A token reaches one collaboration and no other. */
   tokenCollaborationId?: string;
+  /** Where the request came from, as far as that can be believed; a page that is read has none. */
+  address?: string;
 }
 
 /** A person within one collaboration: what every service is given. */
@@ -32,6 +34,9 @@ export interface Actor {
   scopes: Scope[];
   sessionId?: string;
   tokenId?: string;
+  address?: string;
+  /** Nothing in the collaboration changes until an owner opens it again. */
+  isArchived?: boolean;
 }
 
 /**
@@ -42,8 +47,13 @@ export interface Actor {
  */
 export async function actorIn(person: KnownPerson, slug: string): Promise<Actor> {
   if (!slugSchema.safeParse(slug).success) throw new NotFound('collaboration');
-  const rows = await database().query<{ id: string; slug: string; roles: Role[] }>(
-    `select c.id, c.slug, m.roles
+  const rows = await database().query<{
+    id: string;
+    slug: string;
+    roles: Role[];
+    isArchived: boolean;
+  }>(
+    `select c.id, c.slug, m.roles, c.archived_at is not null as "isArchived"
        from collaboration c join member m on m.collaboration_id = c.id
       where c.slug = $1 and m.person_id = $2`,
     { bind: [slug, person.personId], type: QueryTypes.SELECT },
@@ -63,5 +73,7 @@ export async function actorIn(person: KnownPerson, slug: string): Promise<Actor>
     scopes: person.scopes,
     sessionId: person.sessionId,
     tokenId: person.tokenId,
+    address: person.address,
+    isArchived: found.isArchived,
   };
 }

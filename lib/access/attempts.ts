@@ -24,6 +24,7 @@ export const limits = {
   // A page draws its figures one by one; each is a few milliseconds of work.
   figures: { points: 120, seconds: MINUTE_S },
   'password-changes': { points: 10, seconds: 15 * MINUTE_S },
+  notes: { points: 120, seconds: 60 * MINUTE_S },
   invitations: { points: 60, seconds: 60 * MINUTE_S },
 } as const;
 export type LimitName = keyof typeof limits;

@@ -1,6 +1,7 @@
 import { config } from '@/lib/config';
 import { LabError, NotSignedIn } from '@/lib/errors';
 import type { KnownPerson } from './actor';
+import { addressOf } from './attempts';
 import { findPersonOfSession, readSessionCookie, sessionCookieName } from './sessions';
 import { findPersonOfToken } from './tokens';
 
@@ -19,6 +20,11 @@ function cookieOf(headers: Headers, name: string): string | undefined {
  * @throws NotSignedIn for a bearer token that is unknown, expired or revoked
  */
 export async function knownPerson(request: Request): Promise<KnownPerson | null> {
+  const person = await personBehind(request);
+  return person && { ...person, address: addressOf(request.headers) };
+}
+
+async function personBehind(request: Request): Promise<KnownPerson | null> {
   const authorization = request.headers.get('authorization');
   if (authorization !== null) {
     const token = /^Bearer ([\x21-\x7e]{1,200})$/i.exec(authorization)?.[1];

@@ -165,6 +165,8 @@ export const mailKinds = {
 } as const;
 
 export type MailKindName = keyof typeof mailKinds;
-export type MailData<Kind extends MailKindName> = z.input<(typeof mailKinds)[Kind]['schema']>;
+export type MailData<Kind extends MailKindName> = Parameters<
+  (typeof mailKinds)[Kind]['compose']
+>[0];
 
 export const isMailKind = (name: string): name is MailKindName => Object.hasOwn(mailKinds, name);

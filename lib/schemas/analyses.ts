@@ -24,6 +24,43 @@ export const ratePriorSchema = z.discriminatedUnion('law', [
 export type RatePriorInput = z.infer<typeof ratePriorSchema>;
 export const likelihoodSchema = z.enum(['mean-number', 'host-fraction']);
 
+/** A prior that suits its likelihood and is whole. */
+function checkRecipe(
+  recipe: {
+    prior: RatePriorInput;
+    likelihood: z.infer<typeof likelihoodSchema>;
+    background?: number;
+  },
+  context: z.RefinementCtx,
+): void {
+  const { prior, likelihood } = recipe;
+  const refuse = (path: string, message: string) =>
+    context.addIssue({ code: 'custom', path: ['prior', path], message });
+  if (prior.law === 'log-uniform' && prior.min >= prior.max) refuse('min', 'min below max');
+  if (prior.law === 'tabulated') {
+    if (prior.value.length !== prior.density.length)
+      refuse('density', 'one density for each value');
+    if (prior.value.some((value, i) => i > 0 && value <= prior.value[i - 1]))
+      refuse('value', 'increasing values');
+    if (prior.density.every((density) => density === 0)) refuse('density', 'one above zero');
+    if (likelihood === 'host-fraction' && prior.value[prior.value.length - 1] > 1)
+      refuse('value', 'at most 1 for a fraction of stars');
+  }
+  if (recipe.background !== undefined && likelihood === 'host-fraction')
+    context.addIssue({
+      code: 'custom',
+      path: ['background'],
+      message: 'a known background belongs to the mean number',
+    });
+  if (likelihood === 'host-fraction') {
+    if ('max' in prior && prior.max !== undefined && prior.max > 1)
+      refuse('max', 'at most 1 for a fraction of stars');
+    if (prior.law === 'gamma')
+      refuse('law', 'a prior on a fraction: uniform, log-uniform, jeffreys or beta');
+  } else if (prior.law === 'beta')
+    refuse('law', 'a prior on a mean number: uniform, log-uniform, jeffreys or gamma');
+}
+
 /** The editable recipe of an analysis; a run keeps its own copy. */
 export const analysisRecipeSchema = z
   .strictObject({
@@ -57,39 +94,21 @@ export const analysisRecipeSchema = z
     /** Expected number of false detections among those counted; mean number only. */
     background: positiveSchema.max(1000).optional(),
   })
-  .superRefine((recipe, context) => {
-    const { prior, likelihood } = recipe;
-    const refuse = (path: string, message: string) =>
-      context.addIssue({ code: 'custom', path: ['prior', path], message });
-    if (prior.law === 'log-uniform' && prior.min >= prior.max) refuse('min', 'min below max');
-    if (prior.law === 'tabulated') {
-      if (prior.value.length !== prior.density.length)
-        refuse('density', 'one density for each value');
-      if (prior.value.some((value, i) => i > 0 && value <= prior.value[i - 1]))
-        refuse('value', 'increasing values');
-      if (prior.density.every((density) => density === 0)) refuse('density', 'one above zero');
-      if (likelihood === 'host-fraction' && prior.value[prior.value.length - 1] > 1)
-        refuse('value', 'at most 1 for a fraction of stars');
-    }
-    if (recipe.background !== undefined && likelihood === 'host-fraction')
-      context.addIssue({
-        code: 'custom',
-        path: ['background'],
-        message: 'a known background belongs to the mean number',
-      });
-    if (likelihood === 'host-fraction') {
-      if ('max' in prior && prior.max !== undefined && prior.max > 1)
-        refuse('max', 'at most 1 for a fraction of stars');
-      if (prior.law === 'gamma')
-        refuse('law', 'a prior on a fraction: uniform, log-uniform, jeffreys or beta');
-    } else if (prior.law === 'beta')
-      refuse('law', 'a prior on a mean number: uniform, log-uniform, jeffreys or gamma');
-  });
+  .superRefine(checkRecipe);
 export type AnalysisRecipe = z.infer<typeof analysisRecipeSchema>;
 
+/** What is not said follows the settings of the collaboration. */
+export const newRecipeSchema = z
+  .strictObject({
+    ...analysisRecipeSchema.shape,
+    credibleLevel: levelSchema.optional(),
+    combination: analysisRecipeSchema.shape.combination.unwrap().optional(),
+  })
+  .superRefine(checkRecipe);
+export type NewRecipe = z.infer<typeof newRecipeSchema>;
 export const createAnalysisSchema = z.strictObject({
   name: lineSchema(120),
-  recipe: analysisRecipeSchema,
+  recipe: newRecipeSchema,
 });
 export const updateAnalysisSchema = z.strictObject({
   name: lineSchema(120).optional(),

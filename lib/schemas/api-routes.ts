@@ -57,6 +57,7 @@ import {
   targetSchema,
   updateSurveySchema,
 } from './surveys';
+import { talkRoutes } from './talk-routes';
 import {
   columnMappingSchema,
   dependentsSchema,
@@ -356,4 +357,5 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...analyses,
   ...candidateRoutes,
   ...starRoutes,
+  ...talkRoutes,
 ];

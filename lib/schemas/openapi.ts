@@ -6,11 +6,13 @@ import {
 } from '@asteasolutions/zod-to-openapi';
 import { type ZodType, z } from 'zod';
 import { collaborationSchema, sessionSchema } from './account';
+import { activityEntrySchema } from './activity';
 import { analysisRecipeSchema, analysisSchema } from './analyses';
 import { type ApiRoute, apiRoutes } from './api-routes';
 import { auditEntrySchema } from './audit';
 import { candidateDetailSchema, candidateSchema } from './candidates';
 import { jobSchema } from './jobs';
+import { noteSchema } from './notes';
 import { invitationSchema, memberSchema, meSchema, tokenSchema } from './people';
 import {
   listedPopulationSchema,
@@ -20,6 +22,7 @@ import {
 import { faultSchema, problemSchema } from './problem';
 import { runInputsSchema, runResultSchema, runSummarySchema } from './runs';
 import { mapSettingsSchema, mapViewSchema } from './sensitivity';
+import { settingsSchema } from './settings';
 import { studySchema, studySummarySchema } from './studies';
 import { studyResultSchema } from './study-results';
 import { studySettingsSchema } from './study-settings';
@@ -34,6 +37,7 @@ import { uploadReportSchema, uploadSchema } from './uploads';
 
 /** Shapes that a reader looks up by name; all others stand where they are used. */
 const named: Record<string, ZodType> = {
+  Activity: activityEntrySchema,
   Analysis: analysisSchema,
   AnalysisRecipe: analysisRecipeSchema,
   AuditEntry: auditEntrySchema,
@@ -50,6 +54,7 @@ const named: Record<string, ZodType> = {
   MapSettings: mapSettingsSchema,
   Me: meSchema,
   Member: memberSchema,
+  Note: noteSchema,
   ListedPopulation: listedPopulationSchema,
   Population: populationSchema,
   PopulationDefinition: populationDefinitionSchema,
@@ -58,6 +63,7 @@ const named: Record<string, ZodType> = {
   RunResult: runResultSchema,
   RunSummary: runSummarySchema,
   Session: sessionSchema,
+  Settings: settingsSchema,
   Study: studySchema,
   StudyResult: studyResultSchema,
   StudySettings: studySettingsSchema,

@@ -3,6 +3,7 @@ import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { Conflict, InputError, NotFound } from '@/lib/errors';
+import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import {
   type AnalysisRecipe,
   type AnalysisView,
@@ -28,6 +29,7 @@ import { findAnalysis } from './analysis-lookup';
 import { recordAudit } from './audit';
 import { listPopulations } from './populations';
 import { summariseRuns } from './runs';
+import { newRecipeDefaults } from './settings';
 
 const LONGEST_NAME = 120;
 
@@ -130,6 +132,7 @@ async function checkRecipe(
   if ((await SurveyRow.count({ where, transaction })) < surveyIds.length) {
     throw new NotFound('survey');
   }
+  await refuseWithdrawn(collaborationId, surveyIds, transaction);
   const population = await PopulationRow.count({
     where: { collaborationId, id: recipe.populationId },
     transaction,
@@ -208,12 +211,19 @@ async function addAnalysis(
   return view;
 }
 
-export function createAnalysis(
+/** A new analysis; level and rule for shared stars follow the collaboration where it names none. */
+export async function createAnalysis(
   actor: Actor,
-  input: z.output<typeof createAnalysisSchema>,
+  { name, recipe: given }: z.output<typeof createAnalysisSchema>,
 ): Promise<AnalysisView> {
   demand(actor, 'save-analysis', { isOwn: true });
-  return addAnalysis(actor, { ...input, parent: null });
+  const usual = await newRecipeDefaults(actor.collaborationId);
+  const recipe = {
+    ...given,
+    credibleLevel: given.credibleLevel ?? usual.credibleLevel,
+    combination: given.combination ?? usual.combination,
+  };
+  return addAnalysis(actor, { name, recipe, parent: null });
 }
 
 /** A draft of one's own that remembers where it came from. */

@@ -1,12 +1,22 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { type AuditPage, type AuditQuery, auditPageSchema } from '@/lib/schemas/audit';
+import { addFormulaGuard, writeCsv } from '@/lib/formats';
+import {
+  type AuditEntryView,
+  type AuditExportQuery,
+  type AuditPage,
+  type AuditQuery,
+  auditEntrySchema,
+} from '@/lib/schemas/audit';
 import { AuditEntryRow, database, inTransaction } from '@/models';
+import { nameItems } from './item-names';
 
-/** Whom an entry is about: a member within a collaboration, or a person outside of any. */
-export type AuditActor = Pick<Actor, 'personId' | 'via'> &
-  Partial<Pick<Actor, 'collaborationId' | 'sessionId' | 'tokenId'>>;
+/** Whom an entry is about: a member within a collaboration, a person outside of any, a guest. */
+export type AuditActor = {
+  personId: string | null;
+  via: Actor['via'] | 'link';
+} & Partial<Pick<Actor, 'collaborationId' | 'sessionId' | 'tokenId' | 'address'>>;
 
 export interface AuditItem {
   kind: string;
@@ -17,6 +27,7 @@ export interface AuditItem {
  * Adds one entry to the log, in the transaction of what it tells of: both are stored, or neither.
  *
  * @param summary completes "R. Castellan …", such as "invited a student"; no secret, no address of mail
+ * @param details holds `before` and `after` where a value changed
  */
 export async function recordAudit(
   actor: AuditActor,
@@ -34,6 +45,7 @@ export async function recordAudit(
       itemKind: item.kind,
       itemId: item.id,
       summary,
+      address: actor.address ?? null,
       details: {
         ...details,
         via: actor.via,
@@ -44,27 +56,134 @@ export async function recordAudit(
   );
 }
 
+type Filters = Pick<AuditQuery, 'action' | 'item' | 'person' | 'from' | 'to'>;
+
+const CONDITIONS = `a.collaboration_id = $1
+  and ($2::text is null or a.action = $2) and ($3::text is null or a.item_id = $3)
+  and ($4::uuid is null or a.person_id = $4::uuid)
+  and ($5::timestamptz is null or a.created_at >= $5::timestamptz)
+  and ($6::timestamptz is null or a.created_at < $6::timestamptz)`;
+
+const bindOf = (actor: Actor, { action, item, person, from, to }: Filters) => [
+  actor.collaborationId,
+  action ?? null,
+  item ?? null,
+  person ?? null,
+  from ?? null,
+  to ?? null,
+];
+
+async function readEntries(
+  actor: Actor,
+  filters: Filters,
+  limit: number | null,
+  offset: number,
+  transaction?: Transaction,
+): Promise<AuditEntryView[]> {
+  const rows = await database().query<Omit<AuditEntryView, 'at'> & { at: Date }>(
+    `select a.id::text as id, a.created_at as at,
+            coalesce(p.name, case when a.details->>'via' = 'link' then 'a guest'
+              else 'somebody who left' end) as who,
+            a.person_id as "personId", a.action, a.item_kind as "itemKind", a.item_id as "itemId",
+            a.summary, a.address, a.details
+       from audit_entry a left join person p on p.id = a.person_id
+      where ${CONDITIONS} order by a.created_at desc, a.id desc limit $7 offset $8`,
+    {
+      bind: [...bindOf(actor, filters), limit, offset],
+      type: QueryTypes.SELECT,
+      transaction,
+    },
+  );
+  const names = await nameItems(
+    actor.collaborationId,
+    rows.map(({ itemKind: kind, itemId: id }) => ({ kind, id })),
+  );
+  return rows.map((row) => {
+    const name = names.get(`${row.itemKind}:${row.itemId}`);
+    return auditEntrySchema.parse({
+      ...row,
+      at: row.at.toISOString(),
+      item: name?.label ?? null,
+      path: name?.path ?? null,
+    });
+  });
+}
+
 /** Entries of the collaboration, newest first. */
 export async function listAudit(actor: Actor, query: AuditQuery): Promise<AuditPage> {
   demand(actor, 'read-audit');
+  const [counted] = await database().query<{ total: number }>(
+    `select count(*)::int as total from audit_entry a where ${CONDITIONS}`,
+    { bind: bindOf(actor, query), type: QueryTypes.SELECT },
+  );
+  return {
+    entries: await readEntries(actor, query, query.limit, query.offset),
+    total: counted.total,
+  };
+}
+
+/** What the filters of the log offer: actions that occur in it, and who acted. */
+export async function auditChoices(
+  actor: Actor,
+): Promise<{ actions: string[]; people: { id: string; name: string }[] }> {
+  demand(actor, 'read-audit');
+  const bind = [actor.collaborationId];
+  const [actions, people] = await Promise.all([
+    database().query<{ action: string }>(
+      'select distinct action from audit_entry where collaboration_id = $1 order by action',
+      { bind, type: QueryTypes.SELECT },
+    ),
+    database().query<{ id: string; name: string }>(
+      `select p.id, p.name from person p where p.id in (
+         select person_id from audit_entry where collaboration_id = $1) order by p.name`,
+      { bind, type: QueryTypes.SELECT },
+    ),
+  ]);
+  return { actions: actions.map(({ action }) => action), people };
+}
+
+/** A value of any shape as one cell. */
+const cellOf = (value: unknown): string => {
+  if (value === undefined || value === null) return '';
+  return addFormulaGuard(typeof value === 'string' ? value : JSON.stringify(value));
+};
+
+function writeEntriesCsv(entries: readonly AuditEntryView[]): string {
+  const column = (name: string, read: (entry: AuditEntryView) => unknown) => ({
+    name,
+    values: entries.map((entry) => cellOf(read(entry))),
+  });
+  return writeCsv([
+    column('at', ({ at }) => at),
+    column('who', ({ who }) => who),
+    column('action', ({ action }) => action),
+    column('summary', ({ summary }) => summary),
+    column('item_kind', ({ itemKind }) => itemKind),
+    column('item_id', ({ itemId }) => itemId),
+    column('item', ({ item }) => item),
+    column('before', ({ details }) => details.before),
+    column('after', ({ details }) => details.after),
+    column('address', ({ address }) => address),
+    column('via', ({ details }) => details.via),
+  ]);
+}
+
+/** All entries that the filters leave, as a file; that it was taken is an entry of its own. */
+export async function exportAudit(
+  actor: Actor,
+  { format, ...filters }: AuditExportQuery,
+): Promise<{ fileName: string; contentType: string; text: string }> {
+  demand(actor, 'read-audit');
   return inTransaction(async (transaction) => {
-    const conditions = `a.collaboration_id = $1
-      and ($2::text is null or a.action = $2) and ($3::text is null or a.item_id = $3)`;
-    const bind = [actor.collaborationId, query.action ?? null, query.item ?? null];
-    const entries = await database().query<Record<string, unknown>>(
-      `select a.id::text as id, a.created_at as at, coalesce(p.name, 'somebody who left') as who,
-              a.action, a.item_kind as "itemKind", a.item_id as "itemId", a.summary, a.details
-         from audit_entry a left join person p on p.id = a.person_id
-        where ${conditions} order by a.created_at desc, a.id desc limit $4 offset $5`,
-      { bind: [...bind, query.limit, query.offset], type: QueryTypes.SELECT, transaction },
-    );
-    const counted = await database().query<{ total: number }>(
-      `select count(*)::int as total from audit_entry a where ${conditions}`,
-      { bind, type: QueryTypes.SELECT, transaction },
-    );
-    return auditPageSchema.parse({
-      entries: entries.map((entry) => ({ ...entry, at: (entry.at as Date).toISOString() })),
-      total: counted[0].total,
-    });
+    const entries = await readEntries(actor, filters, null, 0, transaction);
+    const item = { kind: 'collaboration', id: actor.collaborationId };
+    const summary = `exported ${entries.length} entries of the log`;
+    await recordAudit(actor, 'export', item, summary, transaction, { format, ...filters });
+    const fileName = `${actor.collaboration}-log.${format}`;
+    if (format === 'csv') {
+      return { fileName, contentType: 'text/csv; charset=utf-8', text: writeEntriesCsv(entries) };
+    }
+    const text = `${JSON.stringify({ collaboration: actor.collaboration, entries }, null, 1)}\n`;
+    return { fileName, contentType: 'application/json; charset=utf-8', text };
   });
 }

@@ -23,11 +23,13 @@ const RESERVED = new Set([
     'me',
   ],
   ...['new', 'password', 'people', 'public', 'r', 'release', 'releases', 'settings', 'sign-in'],
-  ...['sign-out', 'sign-up', 'start', 'static', 'tokens', 'welcome'],
+  ...['log', 'mail', 'activity', 'sign-out', 'sign-up', 'start', 'static', 'tokens', 'welcome'],
 ]);
 
+export const isReserved = (slug: string) => RESERVED.has(slug);
+
 /** One sentence for a reserved word and for a taken one: it does not say who has it. */
-const NOT_FREE = 'This address is not free: choose another';
+export const NOT_FREE = 'This address is not free: choose another';
 
 function toView(row: CollaborationRow, roles: Role[]): CollaborationView {
   const actor = { roles };

@@ -249,6 +249,7 @@ async function whoJoins(
   person: KnownPerson | null,
   input: Join,
   transaction: Transaction,
+  address: string | undefined,
 ): Promise<{ id: string; isNew: boolean }> {
   if (person) {
     if (person.email !== offer.email) {
@@ -274,7 +275,8 @@ async function whoJoins(
       })),
     );
   }
-  const created = await createPerson({ name, password, email: offer.email }, transaction);
+  const account = { name, password, email: offer.email };
+  const created = await createPerson(account, transaction, address);
   return { id: created.id, isNew: true };
 }
 
@@ -283,18 +285,19 @@ export async function acceptInvitation(
   code: string,
   person: KnownPerson | null,
   input: Join,
+  address?: string,
 ): Promise<Joined> {
   try {
     return await inTransaction(async (transaction) => {
       const offer = await findOffer(code, transaction);
-      const joining = await whoJoins(offer, person, input, transaction);
+      const joining = await whoJoins(offer, person, input, transaction, address);
       const { collaborationId, roles } = offer;
       await MemberRow.create({ collaborationId, personId: joining.id, roles }, { transaction });
       await InvitationRow.update(
         { acceptedAt: new Date() },
         { where: { id: offer.id }, transaction },
       );
-      const actor = { personId: joining.id, collaborationId, via: 'session' } as const;
+      const actor = { personId: joining.id, collaborationId, via: 'session', address } as const;
       const item = { kind: 'invitation', id: offer.id };
       const summary = `joined as ${roles.join(', ')}`;
       await recordAudit(actor, 'join', item, summary, transaction, { roles });

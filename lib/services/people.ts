@@ -17,7 +17,11 @@ import { AccessTokenRow, database, inTransaction, MemberRow, PersonRow } from '@
 import { recordAudit } from './audit';
 
 /** Makes a person within the caller's transaction; the password's rules are checked here. */
-export async function createPerson(input: SignUp, transaction: Transaction): Promise<PersonRow> {
+export async function createPerson(
+  input: SignUp,
+  transaction: Transaction,
+  address?: string,
+): Promise<PersonRow> {
   checkPassword(input.password, input);
   const passwordHash = await hashPassword(input.password);
   try {
@@ -26,7 +30,7 @@ export async function createPerson(input: SignUp, transaction: Transaction): Pro
       { transaction },
     );
     const item = { kind: 'person', id: person.id };
-    const actor = { personId: person.id, via: 'session' } as const;
+    const actor = { personId: person.id, via: 'session', address } as const;
     await recordAudit(actor, 'sign-up', item, 'signed up', transaction);
     return person;
   } catch (error) {
@@ -38,8 +42,8 @@ export async function createPerson(input: SignUp, transaction: Transaction): Pro
 }
 
 /** A new person, who may then create a collaboration. */
-export async function signUp(input: SignUp): Promise<Me> {
-  const person = await inTransaction((transaction) => createPerson(input, transaction));
+export async function signUp(input: SignUp, address?: string): Promise<Me> {
+  const person = await inTransaction((transaction) => createPerson(input, transaction, address));
   return meSchema.parse({
     person: { id: person.id, name: person.name, email: person.email },
     collaborations: [],

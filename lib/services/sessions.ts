@@ -41,7 +41,7 @@ async function recordSignIn(
 ): Promise<void> {
   const summary = outcome === 'sign-in' ? 'signed in' : 'was refused at sign-in';
   const item = { kind: 'person', id: personId };
-  await recordAudit({ personId, via: 'session' }, outcome, item, summary, transaction, { address });
+  await recordAudit({ personId, via: 'session', address }, outcome, item, summary, transaction);
 }
 
 /**

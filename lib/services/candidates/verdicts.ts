@@ -113,6 +113,7 @@ export async function giveVerdict(
       reason,
       status,
       probability,
+      isProposal: isProposal === true,
     });
   });
   return getCandidate(actor, id);
