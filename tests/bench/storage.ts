@@ -2,18 +2,16 @@ import { createHash } from 'node:crypto';
 import { closeSync, fsyncSync, mkdtempSync, openSync, readSync, rmSync, writeSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { Client } from 'pg';
 import { decodeMap, ENGINE_VERSION } from '@/lib/sensitivity';
 import { CollaborationRow, CompletenessMapRow, database } from '@/models';
+import { streamMaps } from '@/models/map-stream';
 import { packMap } from '@/models/map-values';
 import { createTestDatabase, dropTestDatabase } from '@/tests/support/database';
 import type { Amount } from './amount';
-import { copyColumn } from './copy-binary';
 import type { Line, Target } from './report';
 import { compareTimed, wallMilliseconds } from './rounds';
 import { GRID, mapSurvey } from './survey';
 
-/** As a run reads its maps. */
 const READ_AT_ONCE = 200;
 const SIZE = GRID.massMjup.length * GRID.semiMajorAxisAu.length;
 const TARGETS: Target[] = [
@@ -83,7 +81,7 @@ function sumFile({ file, digests }: Stored): Float64Array {
   return sum;
 }
 
-/** Rows by digest, some at a time, as a run reads its maps. */
+/** Rows by digest, some at a time, through the driver's own rows. */
 async function sumModels({ collaborationId, digests }: Stored): Promise<Float64Array> {
   const sum = new Float64Array(SIZE);
   for (let first = 0; first < digests.length; first += READ_AT_ONCE) {
@@ -94,20 +92,20 @@ async function sumModels({ collaborationId, digests }: Stored): Promise<Float64A
   return sum;
 }
 
-async function sumCopy(client: Client, { collaborationId }: Stored): Promise<Float64Array> {
+/** As a run reads its maps, each with its axes and in the order of its stars. */
+async function sumStream({ collaborationId, digests }: Stored): Promise<Float64Array> {
   const sum = new Float64Array(SIZE);
-  const statement =
-    `copy (select node_values from completeness_map where collaboration_id = '${collaborationId}' ` +
-    'order by id) to stdout (format binary)';
-  await copyColumn(client, statement, (bytes) => add(sum, bytes));
+  await streamMaps(collaborationId, { by: 'digest', keys: digests }, ({ encoded }) => {
+    for (let i = 0; i < SIZE; i++) sum[i] += encoded[i];
+  });
   return sum;
 }
 
-async function linesOf(stars: number, stored: Stored, client: Client, rounds: number) {
+async function linesOf(stars: number, stored: Stored, rounds: number) {
   const expected = sumFile(stored);
   const ways = [
-    ['as a run reads', () => sumModels(stored), TARGETS],
-    ['COPY binary', () => sumCopy(client, stored), TARGETS],
+    ['plain rows', () => sumModels(stored), []],
+    ['as a run reads', () => sumStream(stored), TARGETS],
   ] as const;
   const lines: Line[] = [];
   for (const [way, read, targets] of ways) {
@@ -140,18 +138,15 @@ export async function storageLines({ rounds, storedMaps }: Amount): Promise<Line
   const made = await createTestDatabase();
   process.env.DATABASE_URL = made.url;
   const folder = mkdtempSync(path.join(tmpdir(), 'bench-storage-'));
-  const client = new Client({ connectionString: made.url, application_name: 'bench' });
   try {
     database();
-    await client.connect();
     const lines: Line[] = [];
     for (const stars of storedMaps) {
       const stored = await storeSurvey(stars, folder);
-      lines.push(...(await linesOf(stars, stored, client, rounds)));
+      lines.push(...(await linesOf(stars, stored, rounds)));
     }
     return lines;
   } finally {
-    await client.end();
     rmSync(folder, { recursive: true, force: true });
     await dropTestDatabase(made);
   }
