@@ -9,8 +9,8 @@ const kindsWith = (added) => `
 do $body$
 declare kinds text;
 begin
-  select string_agg(distinct quote_literal(found[1]), ',') into kinds
-    from pg_constraint, regexp_matches(pg_get_constraintdef(oid), '''([a-z-]+)''', 'g') as found
+  select string_agg(distinct quote_literal(named.parts[1]), ',') into kinds
+    from pg_constraint, regexp_matches(pg_get_constraintdef(oid), '''([a-z-]+)''', 'g') as named(parts)
     where conname = 'job_kind_check' and conrelid = 'job'::regclass;
   alter table job drop constraint job_kind_check;
   execute 'alter table job add constraint job_kind_check check (kind in (' || ${added} || '))';
