@@ -1,15 +1,23 @@
 'use client';
 
 import Link from 'next/link';
-import { useOpenJobs } from '@/components/hooks/use-jobs';
+import { usePathname } from 'next/navigation';
+import { Suspense } from 'react';
+import { useJobs } from '@/components/hooks/use-jobs';
 import { endSession } from '@/components/hooks/use-sign-in';
-import { Icon } from '@/components/ui/icon';
-import { Menu, MenuAction, MenuLink, MenuRule } from '@/components/ui/menu';
+import type { BeginAction } from '@/components/search/entries';
+import { FindButton } from '@/components/search/find-button';
+import { Menu, MenuAction, MenuChoice, MenuLink, MenuNote, MenuRule } from '@/components/ui/menu';
 import { NavLink } from '@/components/ui/nav-link';
 import type { Theme } from '@/components/ui/theme';
-import { ThemeSwitch } from '@/components/ui/theme-switch';
+import { themeChoices } from '@/components/ui/theme-switch';
+import { Toaster } from '@/components/ui/toaster';
 import { TopBar } from '@/components/ui/top-bar';
-import type { JobView } from '@/lib/schemas/jobs';
+import { useTheme } from '@/components/ui/use-theme';
+import { LostBanner } from '@/components/work/lost-banner';
+import { mainSections, moreSections, sectionHref } from '@/components/work/sections';
+import { useEndedJobs } from '@/components/work/use-ended-jobs';
+import { WorkMenu } from '@/components/work/work-menu';
 import type { Me } from '@/lib/schemas/people';
 
 interface LabBarProps {
@@ -17,6 +25,8 @@ interface LabBarProps {
   /** Slug of the collaboration whose pages these are. */
   current: string;
   theme: Theme;
+  /** What the person may begin here. */
+  actions: BeginAction[];
 }
 
 const initialsOf = (name: string) =>
@@ -27,101 +37,108 @@ const initialsOf = (name: string) =>
     .slice(0, 2)
     .toUpperCase();
 
-function wordsOf({ kind, subject }: JobView): string {
-  if (kind === 'compute-maps') return `Maps of ${subject}`;
-  return kind === 'compute-run' ? `Run of ${subject}` : subject;
-}
-
-function RunningJobs({ collaboration }: { collaboration: string }) {
-  const jobs = useOpenJobs(collaboration);
-  if (jobs.length === 0) return null;
+function CollaborationMenu({ me, current }: Pick<LabBarProps, 'me' | 'current'>) {
+  const name = me.collaborations.find((one) => one.slug === current)?.name ?? current;
   return (
-    <Menu
-      look="quiet"
-      align="right"
-      accessibleName={`${jobs.length} jobs running or waiting`}
-      label={
-        <span className="inline-flex items-center gap-1.5 whitespace-nowrap text-ink">
-          <Icon name="running" size={15} />
-          {jobs.length} <span className="max-md:sr-only">running</span>
-        </span>
-      }
-    >
-      {jobs.map((job) => (
-        <MenuLink
-          key={job.id}
-          href={
-            job.kind === 'compute-maps'
-              ? `/${collaboration}/surveys`
-              : `/${collaboration}/analyses/${job.subject.split(',')[0]}`
-          }
-        >
-          {wordsOf(job)}
-          {job.total > 0 && `, ${job.done} of ${job.total}`}
+    <Menu label={name} accessibleName={`Collaboration: ${name}`}>
+      {me.collaborations.map((one) => (
+        <MenuLink key={one.slug} href={`/${one.slug}`} isCurrent={one.slug === current}>
+          {one.name}
         </MenuLink>
       ))}
+      <MenuRule />
+      <MenuLink href={`/${current}/people`}>People and invitations</MenuLink>
+      <MenuLink href="/welcome">Start another collaboration</MenuLink>
     </Menu>
   );
 }
 
-/** The bar over every page of a collaboration. */
-export function LabBar({ me, current, theme }: LabBarProps) {
-  const base = `/${current}`;
-  const name = me.collaborations.find((one) => one.slug === current)?.name ?? current;
+function OwnMenu({ me, current, theme }: Omit<LabBarProps, 'actions'>) {
+  const [chosen, choose] = useTheme(theme);
+  const { name, email } = me.person;
   return (
-    <TopBar
-      brandHref={base}
-      switcher={
-        <Menu
-          label={<span className="max-w-[14ch] truncate md:max-w-[22ch]">{name}</span>}
-          accessibleName={`Collaboration: ${name}`}
+    <Menu look="round" align="right" label={initialsOf(name)} accessibleName={`Your menu, ${name}`}>
+      <MenuNote>
+        <b className="block text-ink text-note">{name}</b>
+        {email}
+      </MenuNote>
+      <MenuRule />
+      <MenuChoice
+        label="Light or dark"
+        value={chosen}
+        onChange={choose}
+        options={themeChoices.map((choice) => ({
+          ...choice,
+          label: choice.value === 'system' ? 'as the system' : choice.label,
+        }))}
+      />
+      <MenuRule />
+      <MenuLink href={`/${current}/me/tokens`}>API tokens</MenuLink>
+      <MenuAction onSelect={() => void endSession()}>Sign out</MenuAction>
+    </Menu>
+  );
+}
+
+/** Main sections in a row; the others behind one word, or below them where the bar is folded. */
+function LabNav({ current }: { current: string }) {
+  const pathname = usePathname();
+  return (
+    <>
+      {mainSections.map((section) => (
+        <NavLink
+          key={section.path}
+          href={sectionHref(current, section)}
+          exact={section.path === ''}
         >
-          {me.collaborations.map((one) => (
-            <MenuLink key={one.slug} href={`/${one.slug}`} isCurrent={one.slug === current}>
-              {one.name}
-            </MenuLink>
-          ))}
-          <MenuRule />
-          <MenuLink href={`${base}/people`}>People and invitations</MenuLink>
-          <MenuLink href="/welcome">Start another collaboration</MenuLink>
+          {section.label}
+        </NavLink>
+      ))}
+      <div className="hidden lg:flex lg:items-center lg:px-1">
+        <Menu label="More" look="plain">
+          {moreSections.map((section) => {
+            const href = sectionHref(current, section);
+            return (
+              <MenuLink key={section.path} href={href} isCurrent={pathname === href}>
+                {section.label}
+              </MenuLink>
+            );
+          })}
         </Menu>
-      }
-      nav={
-        <>
-          <NavLink href={base} exact>
-            Overview
+      </div>
+      <div className="grid grid-cols-2 gap-x-4 border-rule border-t pt-1 lg:hidden">
+        {moreSections.map((section) => (
+          <NavLink key={section.path} href={sectionHref(current, section)} exact>
+            {section.label}
           </NavLink>
-          <NavLink href={`${base}/surveys`}>Surveys</NavLink>
-          <NavLink href={`${base}/stars`}>Stars</NavLink>
-          <NavLink href={`${base}/populations`}>Populations</NavLink>
-          <NavLink href={`${base}/analyses`}>Analyses</NavLink>
-          <NavLink href={`${base}/forecasts`}>Forecasts</NavLink>
-        </>
-      }
-      tools={
-        <>
-          <RunningJobs collaboration={current} />
-          <Menu
-            look="round"
-            align="right"
-            label={initialsOf(me.person.name)}
-            accessibleName={`Your menu, ${me.person.name}`}
-          >
-            <div className="px-3 py-2">
-              <p className="font-semibold">{me.person.name}</p>
-              <p className="text-[13px] text-ink3">{me.person.email}</p>
-            </div>
-            <MenuRule />
-            <div className="px-3 py-2">
-              <ThemeSwitch initial={theme} />
-            </div>
-            <MenuRule />
-            <MenuLink href={`${base}/me/tokens`}>API tokens</MenuLink>
-            <MenuAction onSelect={() => void endSession()}>Sign out</MenuAction>
-          </Menu>
-        </>
-      }
-    />
+        ))}
+      </div>
+    </>
+  );
+}
+
+/** The bar over every page of a collaboration, with what it says of work and of the connection. */
+export function LabBar({ me, current, theme, actions }: LabBarProps) {
+  const { jobs, lost, mutate } = useJobs(current);
+  useEndedJobs(current, jobs);
+  return (
+    <>
+      <TopBar
+        brandHref={`/${current}`}
+        switcher={<CollaborationMenu me={me} current={current} />}
+        nav={<LabNav current={current} />}
+        tools={
+          <>
+            <FindButton collaboration={current} actions={actions} />
+            <WorkMenu collaboration={current} jobs={jobs} onChanged={() => void mutate()} />
+            <OwnMenu me={me} current={current} theme={theme} />
+          </>
+        }
+      />
+      <Suspense>
+        <LostBanner lost={lost} />
+      </Suspense>
+      <Toaster />
+    </>
   );
 }
 

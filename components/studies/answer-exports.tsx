@@ -1,32 +1,24 @@
 'use client';
 
-import { type RefObject, useState } from 'react';
-import { drawingToSvg, svgToPng } from '@/components/charts/export-drawing';
+import { useState } from 'react';
 import { saveFile } from '@/components/charts/save-file';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { Menu, MenuAction } from '@/components/ui/menu';
+import { Menu, MenuAction, MenuNote } from '@/components/ui/menu';
 import { Notice } from '@/components/ui/notice';
 import type { StudyKind } from '@/lib/schemas/study-settings';
-import { answerFileName, fileHead, writeAnswerJson, writeDataCsv } from './data-files';
+import { answerFigures, answerFileName, writeAnswerJson } from './answer-files';
 import type { AnswerProps, KindEntry } from './kind-entry';
-import { kindWords } from './kind-words';
 
 interface AnswerExportsProps<Kind extends StudyKind> {
   entry: KindEntry<Kind>;
   answer: AnswerProps<Kind>;
-  /** Holds the drawings. */
-  area: RefObject<HTMLElement | null>;
 }
 
-/** Files of an answer, made in the page from what it shows; each says that it is a draft. */
-export function AnswerExports<Kind extends StudyKind>(props: AnswerExportsProps<Kind>) {
-  const { entry, answer, area } = props;
+/** Numbers of an answer, made in the page from what it shows; its figures have menus of their own. */
+export function AnswerExports<Kind extends StudyKind>({ entry, answer }: AnswerExportsProps<Kind>) {
   const [problem, setProblem] = useState<string>();
   const { study, asked } = answer;
-  const name = answerFileName(study);
-  const { conditions } = asked.result.statement;
-
-  const make = (write: () => Promise<void>) => async () => {
+  const make = (write: () => void | Promise<void>) => async () => {
     setProblem(undefined);
     try {
       await write();
@@ -34,23 +26,6 @@ export function AnswerExports<Kind extends StudyKind>(props: AnswerExportsProps<
       setProblem(sentenceOf(reason));
     }
   };
-  const figures = (save: (svg: string, file: string) => Promise<void>) =>
-    make(async () => {
-      const drawings = [
-        ...(area.current?.querySelectorAll<SVGSVGElement>('figure svg.chart') ?? []),
-      ];
-      if (drawings.length === 0) throw new Error('This answer has no drawing.');
-      for (const [index, drawing] of drawings.entries()) {
-        const svg = drawingToSvg(drawing, {
-          title: `${kindWords[study.settings.kind].title}, ${study.run.analysisKey}, run ${study.run.number}`,
-          description: drawing.getAttribute('aria-label') ?? '',
-          caption: captionOf(answer, entry.settingsInWords(answer.settings)),
-          label: `draft, run ${study.run.number}`,
-        });
-        await save(svg, drawings.length === 1 ? name : `${name}-${index + 1}`);
-      }
-    });
-
   return (
     <div>
       <Menu
@@ -58,33 +33,20 @@ export function AnswerExports<Kind extends StudyKind>(props: AnswerExportsProps<
         accessibleName={`Export files of question ${study.number}`}
         align="right"
       >
-        <p className="px-3.5 py-1 text-chart text-ink3">
-          Draft, run {study.run.number}: said in every file
-        </p>
-        <MenuAction
-          onSelect={figures(async (svg, file) => saveFile(`${file}.svg`, svg, 'image/svg+xml'))}
-        >
-          Figure, SVG
-        </MenuAction>
-        <MenuAction
-          onSelect={figures(async (svg, file) =>
-            saveFile(`${file}.png`, await svgToPng(svg), 'image/png'),
-          )}
-        >
-          Figure, PNG
-        </MenuAction>
+        <MenuNote>Draft, run {study.run.number}: said in the JSON and in every figure</MenuNote>
         <MenuAction
           onSelect={make(async () => {
-            const tables = (await entry.loadTables())(answer);
-            const csv = writeDataCsv(fileHead(study, conditions), tables);
-            saveFile(`${name}.csv`, csv, 'text/csv');
+            const { saveTables } = await import('@/components/charts/export-figure');
+            const { file, tables } = answerFigures(entry, answer);
+            saveTables(file, (await tables?.()) ?? []);
           })}
         >
-          Numbers of the figure, CSV
+          Numbers, CSV
         </MenuAction>
         <MenuAction
-          onSelect={make(async () => {
-            saveFile(`${name}.json`, writeAnswerJson(study, conditions), 'application/json');
+          onSelect={make(() => {
+            const json = writeAnswerJson(study, asked.result.statement.conditions);
+            saveFile(`${answerFileName(study)}.json`, json, 'application/json');
           })}
         >
           Everything, JSON
@@ -99,16 +61,4 @@ export function AnswerExports<Kind extends StudyKind>(props: AnswerExportsProps<
       )}
     </div>
   );
-}
-
-function captionOf(
-  { study, asked }: Pick<AnswerProps<StudyKind>, 'study' | 'asked'>,
-  settings: string,
-): string[] {
-  return [
-    `${kindWords[study.settings.kind].title}: ${settings}. ${study.headline ?? ''}`.trim(),
-    `${asked.result.statement.sentence}.`,
-    asked.result.statement.conditions.map((condition) => `${condition}.`).join(' '),
-    `SHA-256 ${study.resultDigest ?? ''}, seed ${study.seed}, engine ${study.engineVersion}`,
-  ];
 }

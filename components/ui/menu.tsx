@@ -1,8 +1,9 @@
 'use client';
 
+import * as Primitive from '@radix-ui/react-dropdown-menu';
 import Link from 'next/link';
-import { type KeyboardEvent, type ReactNode, useEffect, useId, useRef, useState } from 'react';
-import { Icon } from './icon';
+import type { ReactNode } from 'react';
+import { Icon, type IconName } from './icon';
 
 interface MenuProps {
   label: ReactNode;
@@ -10,17 +11,24 @@ interface MenuProps {
   accessibleName?: string;
   children: ReactNode;
   align?: 'left' | 'right';
-  look?: 'outlined' | 'quiet' | 'round';
+  look?: MenuLook;
 }
 
-const looks = {
+export type MenuLook = 'outlined' | 'quiet' | 'plain' | 'round';
+
+/** How a button looks that opens something under itself. */
+export const menuLooks: Record<MenuLook, string> = {
   outlined: 'h-9 gap-1.5 rounded border border-rule px-2.5 font-semibold max-lg:h-11',
   quiet: 'h-9 gap-1.5 px-1 font-semibold text-act max-lg:h-11',
+  plain: 'h-9 gap-1 px-1.5 text-ink2 hover:text-ink max-lg:h-11',
   round:
     'size-8 justify-center rounded-full bg-act-soft font-bold text-act text-chart max-lg:size-11',
 };
 
-/** A button that opens a short list of links and actions; arrows move, Escape closes. */
+export const floatingLook =
+  'z-40 rounded border border-rule2 bg-surface text-ink focus-visible:outline-none';
+
+/** A button that opens a short list of links and actions; arrows and letters move, Escape closes. */
 export function Menu({
   label,
   accessibleName,
@@ -28,73 +36,33 @@ export function Menu({
   align = 'left',
   look = 'outlined',
 }: MenuProps) {
-  const [isOpen, setOpen] = useState(false);
-  const root = useRef<HTMLDivElement>(null);
-  const listId = useId();
-
-  useEffect(() => {
-    if (!isOpen) return;
-    const closeOutside = (event: PointerEvent) => {
-      if (!root.current?.contains(event.target as Node)) setOpen(false);
-    };
-    document.addEventListener('pointerdown', closeOutside);
-    return () => document.removeEventListener('pointerdown', closeOutside);
-  }, [isOpen]);
-
-  const move = (event: KeyboardEvent<HTMLDivElement>) => {
-    if (event.key === 'Escape' && isOpen) {
-      event.stopPropagation();
-      setOpen(false);
-      root.current?.querySelector('button')?.focus();
-      return;
-    }
-    if (event.key !== 'ArrowDown' && event.key !== 'ArrowUp') return;
-    event.preventDefault();
-    if (!isOpen) {
-      setOpen(true);
-      requestAnimationFrame(() => items(root.current)[0]?.focus());
-      return;
-    }
-    const all = items(root.current);
-    const here = all.indexOf(document.activeElement as HTMLElement);
-    const step = event.key === 'ArrowDown' ? 1 : -1;
-    all[(here + step + all.length) % all.length]?.focus();
-  };
-
   return (
-    // biome-ignore lint/a11y/noStaticElementInteractions: the keys move between the button and its list
-    <div ref={root} className="relative" onKeyDown={move}>
-      <button
-        type="button"
-        className={`flex max-w-[9.5rem] items-center md:max-w-[15rem] whitespace-nowrap ${looks[look]}`}
-        aria-expanded={isOpen}
-        aria-controls={listId}
+    // Modal would lock the page's scrolling by a style element, which the content policy refuses.
+    <Primitive.Root modal={false}>
+      <Primitive.Trigger
         aria-label={accessibleName}
-        onClick={() => setOpen(!isOpen)}
+        className={`flex max-w-full items-center whitespace-nowrap md:max-w-[15rem] ${menuLooks[look]} ${look === 'round' ? 'shrink-0' : 'min-w-0'}`}
       >
         <span className="truncate">{label}</span>
         {look !== 'round' && <Icon name="down" size={14} />}
-      </button>
-      <div
-        id={listId}
-        hidden={!isOpen}
-        className={`absolute top-full z-40 mt-1 min-w-48 rounded border border-rule2 bg-surface py-1 ${align === 'right' ? 'right-0' : 'left-0'}`}
-        onClickCapture={(event) => {
-          if ((event.target as Element).closest('[data-menu-item]')) setOpen(false);
-        }}
-      >
-        {children}
-      </div>
-    </div>
+      </Primitive.Trigger>
+      <Primitive.Portal>
+        <Primitive.Content
+          align={align === 'right' ? 'end' : 'start'}
+          sideOffset={4}
+          collisionPadding={8}
+          loop
+          className={`${floatingLook} max-h-[70dvh] min-w-48 max-w-[calc(100vw-16px)] overflow-y-auto py-1`}
+        >
+          {children}
+        </Primitive.Content>
+      </Primitive.Portal>
+    </Primitive.Root>
   );
 }
 
-function items(root: HTMLElement | null): HTMLElement[] {
-  return [...(root?.querySelectorAll<HTMLElement>('[data-menu-item]') ?? [])];
-}
-
 const itemLook =
-  'flex min-h-9 w-full items-center gap-2 px-3.5 py-1 text-left text-ink text-note hover:bg-act-soft hover:no-underline focus-visible:-outline-offset-2 max-lg:min-h-11';
+  'flex min-h-9 w-full cursor-pointer items-center gap-2 px-3.5 py-1 text-left text-ink text-note outline-none hover:no-underline data-[highlighted]:bg-act-soft data-[highlighted]:shadow-[inset_3px_0_0_var(--act)] max-lg:min-h-11';
 
 export function MenuLink({
   href,
@@ -106,25 +74,84 @@ export function MenuLink({
   children: ReactNode;
 }) {
   return (
-    <Link
-      href={href}
-      data-menu-item=""
-      aria-current={isCurrent ? 'true' : undefined}
-      className={`${itemLook} ${isCurrent ? 'font-semibold' : ''}`}
-    >
-      {children}
-    </Link>
+    <Primitive.Item asChild>
+      <Link
+        href={href}
+        aria-current={isCurrent ? 'true' : undefined}
+        className={`${itemLook} ${isCurrent ? 'font-semibold' : ''}`}
+      >
+        {children}
+      </Link>
+    </Primitive.Item>
+  );
+}
+
+/** An address that answers with a file. */
+export function MenuFile({ href, children }: { href: string; children: ReactNode }) {
+  return (
+    <Primitive.Item asChild>
+      <a href={href} download className={itemLook}>
+        {children}
+      </a>
+    </Primitive.Item>
   );
 }
 
 export function MenuAction({ onSelect, children }: { onSelect(): void; children: ReactNode }) {
   return (
-    <button type="button" data-menu-item="" className={itemLook} onClick={onSelect}>
+    <Primitive.Item className={itemLook} onSelect={onSelect}>
       {children}
-    </button>
+    </Primitive.Item>
+  );
+}
+
+interface MenuChoiceProps<V extends string> {
+  label: string;
+  value: V;
+  options: { value: V; label: ReactNode; icon?: IconName }[];
+  onChange(value: V): void;
+}
+
+/** One of a few, chosen without leaving the menu. */
+export function MenuChoice<V extends string>({
+  label,
+  value,
+  options,
+  onChange,
+}: MenuChoiceProps<V>) {
+  return (
+    <Primitive.RadioGroup
+      aria-label={label}
+      value={value}
+      onValueChange={(next) => onChange(next as V)}
+    >
+      {options.map((option) => (
+        <Primitive.RadioItem
+          key={option.value}
+          value={option.value}
+          className={itemLook}
+          onSelect={(event) => event.preventDefault()}
+        >
+          {option.icon && <Icon name={option.icon} size={15} className="text-ink3" />}
+          <span className={option.value === value ? 'font-semibold' : ''}>{option.label}</span>
+          <Primitive.ItemIndicator className="ml-auto">
+            <Icon name="ok" size={15} />
+          </Primitive.ItemIndicator>
+        </Primitive.RadioItem>
+      ))}
+    </Primitive.RadioGroup>
+  );
+}
+
+/** Words between the entries, such as whose menu it is. */
+export function MenuNote({ children }: { children: ReactNode }) {
+  return (
+    <Primitive.Label className="block px-3.5 py-1.5 text-chart text-ink3">
+      {children}
+    </Primitive.Label>
   );
 }
 
 export function MenuRule() {
-  return <hr className="my-1 border-rule border-t" />;
+  return <Primitive.Separator className="my-1 border-rule border-t" />;
 }

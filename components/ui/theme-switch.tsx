@@ -1,29 +1,18 @@
 'use client';
 
-import { useState } from 'react';
 import { ConsequenceSwitch } from './consequence-switch';
 import { Icon, type IconName } from './icon';
-import { THEME_COOKIE, type Theme } from './theme';
+import type { Theme } from './theme';
+import { useTheme } from './use-theme';
 
-const icons: Record<Theme, IconName> = { light: 'light', dark: 'dark', system: 'system' };
-const oneYear = 31_536_000;
+export const themeChoices: { value: Theme; label: string; icon: IconName }[] = [
+  { value: 'light', label: 'light', icon: 'light' },
+  { value: 'dark', label: 'dark', icon: 'dark' },
+  { value: 'system', label: 'system', icon: 'system' },
+];
 
-/** Keeps the choice in a cookie, so that the server writes it into the next page's first byte. */
 export function ThemeSwitch({ initial }: { initial: Theme }) {
-  const [theme, setTheme] = useState(initial);
-  const choose = (next: Theme) => {
-    setTheme(next);
-    const root = document.documentElement;
-    if (next === 'system') {
-      delete root.dataset.theme;
-      // biome-ignore lint/suspicious/noDocumentCookie: the Cookie Store API is not in every browser that we serve
-      document.cookie = `${THEME_COOKIE}=; path=/; max-age=0; samesite=lax`;
-    } else {
-      root.dataset.theme = next;
-      // biome-ignore lint/suspicious/noDocumentCookie: the Cookie Store API is not in every browser that we serve
-      document.cookie = `${THEME_COOKIE}=${next}; path=/; max-age=${oneYear}; samesite=lax`;
-    }
-  };
+  const [theme, choose] = useTheme(initial);
   return (
     <ConsequenceSwitch<Theme>
       label="Light or dark"
@@ -31,12 +20,12 @@ export function ThemeSwitch({ initial }: { initial: Theme }) {
       size="small"
       value={theme}
       onChange={choose}
-      options={(['light', 'dark', 'system'] as const).map((value) => ({
+      options={themeChoices.map(({ value, label, icon }) => ({
         value,
         label: (
           <span className="inline-flex items-center gap-1.5">
-            <Icon name={icons[value]} size={14} />
-            {value}
+            <Icon name={icon} size={14} />
+            {label}
           </span>
         ),
       }))}

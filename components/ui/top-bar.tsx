@@ -32,14 +32,14 @@ export function TopBar({ brandHref, switcher, nav, tools }: TopBarProps) {
       >
         <Link
           href={brandHref}
-          className="flex min-h-11 items-center gap-[9px] hover:no-underline lg:min-h-0"
+          className="flex min-h-11 shrink-0 items-center gap-[9px] hover:no-underline lg:min-h-0"
         >
           <Mark />
           <span className="max-md:sr-only lg:max-xl:sr-only">
             <Wordmark />
           </span>
         </Link>
-        {switcher}
+        {switcher !== undefined && <div className="min-w-0 flex-1 lg:flex-none">{switcher}</div>}
         {hasNav && (
           <nav
             id={navId}
@@ -52,7 +52,7 @@ export function TopBar({ brandHref, switcher, nav, tools }: TopBarProps) {
             {nav}
           </nav>
         )}
-        <div className="ml-auto flex min-w-0 items-center gap-1 md:gap-3.5">
+        <div className="ml-auto flex shrink-0 items-center md:gap-2.5">
           {tools}
           {hasNav && (
             <button

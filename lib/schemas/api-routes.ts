@@ -43,6 +43,7 @@ import {
 import { createPopulationSchema, populationSchema } from './populations';
 import { runSchema, runSummarySchema } from './runs';
 import { sampleRoutes } from './sample-routes';
+import { searchRoutes } from './search-routes';
 import { mapViewSchema } from './sensitivity';
 import { starRoutes } from './star-routes';
 import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
@@ -354,6 +355,7 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...people,
   ...surveys,
   ...sampleRoutes,
+  ...searchRoutes,
   ...analyses,
   ...candidateRoutes,
   ...starRoutes,

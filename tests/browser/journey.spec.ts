@@ -151,7 +151,7 @@ test('a statistician takes a survey from its files to an upper limit', async ({
   await test.step('the exported limits carry level, prior and the word draft', async () => {
     await open(page, 'Export files of run 1');
     const arriving = page.waitForEvent('download');
-    await page.getByRole('link', { name: 'Limits by level, CSV' }).first().click();
+    await page.getByRole('menuitem', { name: 'Limits by level, CSV' }).first().click();
     const text = await readFile(await (await arriving).path(), 'utf8');
     expect(text).toContain('0.95');
     expect(text).toContain('uniform');
@@ -162,7 +162,7 @@ test('a statistician takes a survey from its files to an upper limit', async ({
   await test.step('signing out ends the session on the server too', async () => {
     const kept = await page.context().storageState();
     await open(page, /^Your menu/);
-    await page.getByRole('button', { name: 'Sign out' }).click();
+    await page.getByRole('menuitem', { name: 'Sign out' }).click();
     await page.waitForURL('**/sign-in**');
     await page.goto(LAB);
     await expect(page).toHaveURL(/\/sign-in\?next=%2Fbreakwater/);
