@@ -13,6 +13,8 @@ const environment = z.object({
   RAREBOUND_WORKER_THREADS: z.coerce.number().int().min(1).optional(),
   /** 'yes' when a proxy of ours stands before the server and writes X-Forwarded-For. */
   RAREBOUND_BEHIND_PROXY: z.enum(['yes', 'no']).default('no'),
+  /** Who reads /api/metrics sends this as a bearer token; without it there is no such page. */
+  RAREBOUND_METRICS_TOKEN: z.string().min(16).optional(),
   NODE_ENV: z.string().default('development'),
 });
 
@@ -29,6 +31,7 @@ export interface Config {
   bundleDirectory: string;
   workerThreads: number | undefined;
   isBehindProxy: boolean;
+  metricsToken: string | undefined;
   isProduction: boolean;
 }
 
@@ -53,6 +56,7 @@ export function config(): Config {
     bundleDirectory: env.RAREBOUND_BUNDLE_DIR,
     workerThreads: env.RAREBOUND_WORKER_THREADS,
     isBehindProxy: env.RAREBOUND_BEHIND_PROXY === 'yes',
+    metricsToken: env.RAREBOUND_METRICS_TOKEN,
     isProduction: env.NODE_ENV === 'production',
   };
   return parsed;

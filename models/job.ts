@@ -32,6 +32,7 @@ export class JobRow extends Model<InferAttributes<JobRow>, InferCreationAttribut
   declare cancelRequestedAt: CreationOptional<Date | null>;
   declare fault: CreationOptional<string | null>;
   declare requestedBy: CreationOptional<string | null>;
+  declare requestId: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare startedAt: CreationOptional<Date | null>;
   declare finishedAt: CreationOptional<Date | null>;
@@ -56,6 +57,7 @@ export function defineJob(sequelize: Sequelize): void {
       cancelRequestedAt: DataTypes.DATE,
       fault: DataTypes.TEXT,
       requestedBy: DataTypes.UUID,
+      requestId: DataTypes.TEXT,
       createdAt: DataTypes.DATE,
       startedAt: DataTypes.DATE,
       finishedAt: DataTypes.DATE,

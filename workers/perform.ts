@@ -45,7 +45,12 @@ export async function perform(
     log('info', 'job not taken', { jobId, why: 'ended, stopped or held by another attempt' });
     return;
   }
-  log('info', 'job taken', { jobId, kind: attempt.kind, attempt: attempt.number });
+  log('info', 'job taken', {
+    jobId,
+    request: attempt.requestId ?? undefined,
+    kind: attempt.kind,
+    attempt: attempt.number,
+  });
   const stop = new AbortController();
   const onShutdown = () => stop.abort(new Stopped('shutdown'));
   shutdown.addEventListener('abort', onShutdown);

@@ -22,6 +22,8 @@ export interface Attempt {
   collaborationId: string;
   kind: JobKind;
   payload: JobRow['payload'];
+  /** Of the request that asked for the job, where one did. */
+  requestId: string | null;
 }
 
 interface Claimed {
@@ -30,6 +32,7 @@ interface Claimed {
   collaboration_id: string;
   kind: JobKind;
   payload: JobRow['payload'];
+  request_id: string | null;
 }
 
 /**
@@ -45,12 +48,12 @@ export async function claim(jobId: string, workerId: string): Promise<Attempt | 
        started_at = coalesce(started_at, now()), fault = null
      where id = $1 and attempts < $4 and cancel_requested_at is null
        and (status = 'waiting' or (status = 'running' and lease_until < clock_timestamp()))
-     returning attempt_token as token, attempts as number, collaboration_id, kind, payload`,
+     returning attempt_token as token, attempts as number, collaboration_id, kind, payload, request_id`,
     [jobId, workerId, LEASE_S, MAX_ATTEMPTS],
   );
   if (!row) return null;
-  const { token, number, collaboration_id: collaborationId, kind, payload } = row;
-  return { jobId, token, number, collaborationId, kind, payload };
+  const { token, number, collaboration_id: collaborationId, kind, payload, request_id } = row;
+  return { jobId, token, number, collaborationId, kind, payload, requestId: request_id };
 }
 
 /**

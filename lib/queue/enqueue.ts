@@ -2,6 +2,7 @@ import type { Transaction } from 'sequelize';
 import { JobRow } from '@/models';
 import { type JobKind, type JobPayload, jobKinds } from './kinds';
 import { MAX_ATTEMPTS } from './lease';
+import { requestIdNow } from './request-id';
 import { select } from './statement';
 
 interface NewJob<Kind extends JobKind> {
@@ -37,7 +38,7 @@ async function insertJob<Kind extends JobKind>(
   job: NewJob<Kind>,
 ): Promise<string> {
   const payload = jobKinds[job.kind].parse(job.payload);
-  const row = await JobRow.create({ ...job, payload }, { transaction });
+  const row = await JobRow.create({ ...job, payload, requestId: requestIdNow() }, { transaction });
   await deliver(transaction, row);
   return row.id;
 }

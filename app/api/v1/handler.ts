@@ -5,7 +5,9 @@ import { addressOf, countAttempt, type LimitName } from '@/lib/access/attempts';
 import { knownPerson, requireSameOrigin } from '@/lib/access/requests';
 import { config } from '@/lib/config';
 import { AccessError, LabError, NotSignedIn } from '@/lib/errors';
+import { withinRequest } from '@/lib/queue/request-id';
 import { parseInput, parseQuery } from '@/lib/schemas/input';
+import { observeRequest } from '@/lib/services/metrics';
 import { logRequest, problemOf } from './problem';
 import { readJson, requireJsonType } from './read-body';
 
@@ -69,11 +71,13 @@ async function answer(
   let response: Response;
   let fault: unknown;
   try {
-    response = finish(shape(await work(seen), status), requestId);
+    response = finish(shape(await withinRequest(requestId, () => work(seen)), status), requestId);
   } catch (error) {
     fault = error;
     response = finish(problemOf(error, requestId), requestId);
   }
+  const seconds = (performance.now() - started) / 1000;
+  observeRequest(request, { status: response.status, seconds });
   logRequest({ request, requestId, started, status: response.status, person: seen.person, fault });
   return response;
 }
