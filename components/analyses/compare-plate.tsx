@@ -4,6 +4,7 @@ import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
 import { savedAnswer } from '@/components/runs/live-answer';
 import { reachTo } from '@/components/runs/posterior-data';
+import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Plate, StatementNumber } from '@/components/ui/plate';
 import { describeLevel } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
@@ -11,10 +12,12 @@ import type { ComparedInput, ComparedRun } from './compare-differences';
 
 /** Both statements, and both posteriors and limits on one axis. */
 export function ComparePlate({
+  collaboration,
   a,
   b,
   inputs,
 }: {
+  collaboration: string;
   a: ComparedRun;
   b: ComparedRun;
   inputs: ComparedInput[];
@@ -27,9 +30,9 @@ export function ComparePlate({
   return (
     <Plate className="grid gap-x-[26px] gap-y-6 xl:grid-cols-[450px_1fr]">
       <div>
-        <Side letter="A" side={a} limit={first.limit} />
+        <Side letter="A" side={a} collaboration={collaboration} limit={first.limit} />
         <hr className="my-4 border-rule border-t" />
-        <Side letter="B" side={b} limit={second.limit} isSecond />
+        <Side letter="B" side={b} collaboration={collaboration} limit={second.limit} isSecond />
         <p className="mt-4 max-w-[52ch] text-ink3 text-note">{bothWords(same)}</p>
       </div>
       <PosteriorChart
@@ -51,11 +54,13 @@ export function ComparePlate({
 }
 
 function Side({
+  collaboration,
   letter,
   side,
   limit,
   isSecond = false,
 }: {
+  collaboration: string;
   letter: string;
   side: ComparedRun;
   limit: number;
@@ -85,6 +90,13 @@ function Side({
         {detectionWords(side)}, <MassRange definition={side.definition} />,{' '}
         <AxisRange definition={side.definition} />, {describeLevel(side.result.credibleLevel)}
       </p>
+      <div className="-ml-1">
+        <RecordedStatementCopy
+          collaboration={collaboration}
+          runId={side.run.id}
+          of={`limit ${letter}`}
+        />
+      </div>
     </div>
   );
 }

@@ -110,7 +110,7 @@ function Comparison({
   const words = compareSentences(a, b, differing);
   return (
     <>
-      <ComparePlate a={a} b={b} inputs={inputs} />
+      <ComparePlate collaboration={collaboration} a={a} b={b} inputs={inputs} />
       {otherQuestion.length > 0 && (
         <div className="mt-4">
           <Notice

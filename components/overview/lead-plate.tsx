@@ -2,6 +2,7 @@ import Link from 'next/link';
 import { HistoryStaircase } from '@/components/charts/history-staircase';
 import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Icon } from '@/components/ui/icon';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
 import {
@@ -88,7 +89,10 @@ export function LeadPlate({
               ]}
             />
           </div>
-          <p className="mt-4 flex flex-wrap gap-x-7 gap-y-2 text-[14px]">
+          <div className="mt-2 -ml-1">
+            <RecordedStatementCopy collaboration={collaboration} runId={run.id} />
+          </div>
+          <p className="mt-2 flex flex-wrap gap-x-7 gap-y-2 text-[14px]">
             <Link
               className="font-semibold text-p-data"
               href={`/${collaboration}/analyses/${lead.key}`}

@@ -10,10 +10,19 @@ interface LevelTableProps {
   detections: number;
   /** Ranges and priors, since a limit without them says nothing. */
   foot: React.ReactNode;
+  /** Takes the limit of one row along. */
+  copyOf?(level: number, limit: number): React.ReactNode;
 }
 
 /** Limits by level, with and without detections, for the fraction of hosts and the mean number. */
-export function LevelTable({ levels, credibleLevel, quantity, detections, foot }: LevelTableProps) {
+export function LevelTable({
+  levels,
+  credibleLevel,
+  quantity,
+  detections,
+  foot,
+  copyOf,
+}: LevelTableProps) {
   const isChosen = (level: number) => Math.abs(level - credibleLevel) < 1e-9;
   const bound = (chosen: boolean, column: RateQuantity) =>
     chosen && column === quantity ? 'limit' : '';
@@ -29,6 +38,7 @@ export function LevelTable({ levels, credibleLevel, quantity, detections, foot }
             <HeadCell scope="colgroup" colSpan={2} className="border-b-rule text-center">
               zero detections
             </HeadCell>
+            {copyOf && <HeadCell scope="col" aria-hidden="true" className="border-b-0" />}
           </tr>
           <tr>
             <HeadCell>level</HeadCell>
@@ -40,6 +50,11 @@ export function LevelTable({ levels, credibleLevel, quantity, detections, foot }
                 Poisson rate, %
               </HeadCell>,
             ])}
+            {copyOf && (
+              <HeadCell>
+                <span className="sr-only">take along</span>
+              </HeadCell>
+            )}
           </tr>
         </TableHead>
         <TableBody>
@@ -59,6 +74,11 @@ export function LevelTable({ levels, credibleLevel, quantity, detections, foot }
                 </Cell>
                 <Cell isNumeric>{percentBelow(row.hostFractionZero)}</Cell>
                 <Cell isNumeric>{percentBelow(row.meanNumberZero)}</Cell>
+                {copyOf && (
+                  <Cell className="py-0">
+                    <CopyOfRow row={row} quantity={quantity} copyOf={copyOf} />
+                  </Cell>
+                )}
               </Row>
             );
           })}
@@ -67,6 +87,20 @@ export function LevelTable({ levels, credibleLevel, quantity, detections, foot }
       <p className="mt-2 text-chart text-ink3">{foot} Poisson rate: planets per 100 stars.</p>
     </>
   );
+}
+
+/** The limit of the shown quantity; without one there is nothing to take along. */
+function CopyOfRow({
+  row,
+  quantity,
+  copyOf,
+}: {
+  row: RunResult['levels'][number];
+  quantity: RateQuantity;
+  copyOf: NonNullable<LevelTableProps['copyOf']>;
+}) {
+  const limit = quantity === 'host_fraction' ? row.hostFraction : row.meanNumber;
+  return limit === null ? null : copyOf(row.level, limit);
 }
 
 /** "2 detections", "1 detection", "no detection". */

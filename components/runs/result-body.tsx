@@ -2,9 +2,12 @@
 
 import { type ReactNode, useCallback, useDeferredValue, useMemo, useRef, useState } from 'react';
 import { PosteriorChart, type PosteriorView } from '@/components/charts/posterior-chart';
+import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { documentOfShown } from '@/components/statement/document-of-shown';
+import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
 import { FurtherQuestions } from '@/components/studies/further-questions';
 import { FoldSection } from '@/components/ui/fold-section';
@@ -24,6 +27,7 @@ import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
 import { ResultConsole } from './result-console';
 import { ResultSections } from './result-sections';
 import { conditionRows, ResultStatement } from './result-statement';
+import { runFigures } from './run-figures';
 import { type ShownResult, showResult } from './shown-result';
 import { useAnnounced } from './use-announced';
 import { useLiveResult } from './use-live-result';
@@ -63,7 +67,7 @@ export function ResultBody(props: ResultBodyProps) {
   const insideCount = inputs.companions.length - shown.outside.length;
 
   return (
-    <>
+    <FigureFrame collaboration={collaboration} {...runFigures(run, inputs, result, shown)}>
       <ResultPlate {...{ run, inputs, result, shown, onDefinition }} grid={map} />
       {outcome?.fault !== undefined && (
         <div className="mt-3">
@@ -130,7 +134,7 @@ export function ResultBody(props: ResultBodyProps) {
       <ResultSections
         inputs={inputs}
         result={result}
-        runNumber={run.number}
+        run={run}
         sample={sample}
         map={map}
         {...later}
@@ -140,6 +144,7 @@ export function ResultBody(props: ResultBodyProps) {
         <FoldSection
           number={6}
           title="Provenance"
+          help="fingerprint"
           context={
             isUnsaved || shown.isLive
               ? `run ${run.number}; a live change is not recorded until you save`
@@ -174,7 +179,7 @@ export function ResultBody(props: ResultBodyProps) {
         </div>
         {props.footActions}
       </FootBar>
-    </>
+    </FigureFrame>
   );
 }
 
@@ -221,6 +226,7 @@ function ResultPlate({
             cooling: inputs.cooling,
           })}
           announced={announced}
+          copy={<ShownStatementCopy make={() => documentOfShown({ run, inputs, result, shown })} />}
           onDefinition={onDefinition}
         />
       </div>

@@ -4,10 +4,12 @@ import { memo } from 'react';
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { MapData } from '@/components/charts/map-contours';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
+import { documentOfShown } from '@/components/statement/document-of-shown';
+import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { BesideTable } from './beside-table';
 import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
@@ -19,7 +21,7 @@ import { StarsSection } from './stars-section';
 interface ResultSectionsProps {
   inputs: RunInputs;
   result: RunResult;
-  runNumber: number;
+  run: RunView;
   sample?: LiveSample;
   shown: ShownResult;
   map: MapData;
@@ -34,10 +36,10 @@ interface ResultSectionsProps {
  * the number and its curve.
  */
 export const ResultSections = memo(function ResultSections(props: ResultSectionsProps) {
-  const { inputs, result, runNumber, sample, shown, map, depth, definition } = props;
+  const { inputs, result, run, sample, shown, map, depth, definition } = props;
   const { quantity, setting } = shown;
   const beside = shown.beside();
-  const ofRun = shown.isLive ? runNumber : undefined;
+  const ofRun = shown.isLive ? run.number : undefined;
   return (
     <>
       <div className="grid min-w-0 gap-x-[60px] md:gap-y-8 xl:grid-cols-[minmax(0,780fr)_minmax(0,520fr)]">
@@ -62,6 +64,16 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
               credibleLevel={setting.credibleLevel}
               quantity={quantity}
               detections={shown.counted.length}
+              copyOf={(level, limit) => (
+                <ShownStatementCopy
+                  label="Copy"
+                  align="right"
+                  of={`the ${describeLevel(level)} limit`}
+                  make={() =>
+                    documentOfShown({ run, inputs, result, shown, row: { level, limit } })
+                  }
+                />
+              )}
               foot={
                 <>
                   <MassRange definition={setting.definition} />,{' '}

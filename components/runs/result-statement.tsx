@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { type ConditionRow, Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
@@ -26,6 +27,8 @@ interface ResultStatementProps {
   conditions: ConditionRow[];
   /** Read out when the number has been still for a while. */
   announced: string;
+  /** Takes the statement along. */
+  copy?: ReactNode;
   onDefinition(definition: PowerLawDefinition): void;
 }
 
@@ -61,6 +64,7 @@ export function ResultStatement(props: ResultStatementProps) {
         {announced}
       </p>
       <Conditions rows={conditions} />
+      {props.copy !== undefined && <div className="mt-2 -ml-1">{props.copy}</div>}
     </div>
   );
 }

@@ -3,6 +3,8 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startRun } from '@/components/hooks/use-runs';
+import { WithdrawnNotices } from '@/components/sharing/withdrawn-notice';
+import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -62,6 +64,7 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
           The controls of this page know plain power laws only; this population is another one, so a
           change of it is a new version and a new run.
         </Notice>
+        <WithdrawnNotices surveys={run?.withdrawn} />
         {isOnItsWay && newest && <RunProgress run={newest} {...shared} />}
         {hasEnded && newest && <RunEnded run={newest} {...shared} />}
         {problem !== undefined && (
@@ -75,6 +78,9 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
           <Plate>
             <p className="statement mb-5">{run.result.statement.sentence}</p>
             <Conditions rows={run.result.statement.conditions.map(asRow)} />
+            <div className="mt-2 -ml-1">
+              <RecordedStatementCopy collaboration={collaboration} runId={run.id} />
+            </div>
           </Plate>
           <div className="px-0.5 pt-3.5">
             <CalibrationCheck

@@ -1,4 +1,5 @@
 import { fingerprint, formatDay } from '@/components/runs/time-words';
+import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Conditions } from '@/components/ui/plate';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -17,7 +18,15 @@ export function AnswerConditions({ asked, settings }: { asked: AskedRun; setting
     <section>
       <SectionOpener
         title="What it rests on"
+        help="statement"
         context={`run ${asked.run.number}: ${statement.sentence}`}
+        tools={
+          <RecordedStatementCopy
+            align="right"
+            collaboration={asked.collaboration}
+            runId={asked.run.id}
+          />
+        }
       />
       <div className="max-w-4xl">
         <Conditions
