@@ -1,6 +1,8 @@
 'use client';
 
-import { useRef, useState } from 'react';
+import Link from 'next/link';
+import { useState } from 'react';
+import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { removeObservation, useCandidate } from '@/components/hooks/use-candidates';
 import { Button } from '@/components/ui/button';
@@ -16,7 +18,7 @@ import { EpochTable } from './epoch-table';
 import { Estimates } from './estimates';
 import { MotionSection } from './motion-section';
 import { statusMarks, statusWords } from './status-words';
-import { TrackExports } from './track-exports';
+import { trackFigures } from './track-figure';
 import { VerdictForm } from './verdict-form';
 import { VerdictHistory, withErrors } from './verdict-history';
 
@@ -42,16 +44,37 @@ function factsOf(candidate: CandidateDetail): Fact[] {
     },
     {
       name: 'semi-major axis',
+      help: 'companion',
       value:
         semiMajorAxisAu === null ? '–' : withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, 'AU'),
     },
     {
       name: 'probability of being bound',
+      help: 'undecided-candidates',
       value: candidate.probability === null ? '–' : formatPlain(candidate.probability),
     },
     { name: 'ranges of the lead analysis', value: rangesFact(candidate) },
     { name: 'epochs', value: candidate.seen.length },
   ];
+}
+
+/** Whose age and distance the estimates and the track rest on. */
+function HostValues({
+  collaboration,
+  candidate,
+}: {
+  collaboration: string;
+  candidate: CandidateDetail;
+}) {
+  const { adopted = [], starId } = candidate.target;
+  return (
+    <p className="mt-2 text-ink3 text-note">
+      {adopted.length > 0
+        ? `Estimates and track use the adopted ${adopted.join('; ')}. `
+        : `Estimates and track use age and distance as ${candidate.survey.name} lists them. `}
+      {starId !== undefined && <Link href={`/${collaboration}/stars/${starId}`}>The star</Link>}
+    </p>
+  );
 }
 
 /** One candidate: what was seen, what it says, and what people decided. */
@@ -65,7 +88,6 @@ export function CandidateScreen({
   const { data: candidate = initial, mutate } = useCandidate(collaboration, initial);
   const [isAdding, setAdding] = useState(false);
   const [refusal, setRefusal] = useState<string | null>(null);
-  const drawing = useRef<HTMLDivElement>(null);
   const take = (next: CandidateDetail) => void mutate(next, { revalidate: false });
   const remove = async (id: string) => {
     setRefusal(null);
@@ -123,16 +145,10 @@ export function CandidateScreen({
       <div className="mt-7 grid grid-cols-1 gap-x-14 gap-y-9 xl:grid-cols-[minmax(0,7fr)_minmax(0,4fr)]">
         <div className="flex min-w-0 flex-col gap-9">
           <section>
-            <SectionOpener
-              number={1}
-              title="Bound or behind"
-              tools={
-                candidate.seen.length > 0 && <TrackExports candidate={candidate} area={drawing} />
-              }
-            />
-            <div ref={drawing}>
+            <SectionOpener number={1} title="Bound or behind" help="background" />
+            <FigureFrame collaboration={collaboration} {...trackFigures(candidate)}>
               <MotionSection candidate={candidate} />
-            </div>
+            </FigureFrame>
           </section>
           <section>
             <SectionOpener number={2} title="Epochs" context="errors of 1 σ" />
@@ -143,6 +159,7 @@ export function CandidateScreen({
           <section>
             <SectionOpener number={3} title="Mass and axis" context="if it is bound" />
             <Estimates candidate={candidate} />
+            <HostValues collaboration={collaboration} candidate={candidate} />
           </section>
           <section>
             <SectionOpener number={4} title="Verdict" />

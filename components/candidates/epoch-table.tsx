@@ -39,9 +39,9 @@ function sigmaOf(candidate: CandidateDetail, id: string, of: 'commonProperMotion
   return formatSignificant(candidate.hypotheses[of].sigmas[index], 2);
 }
 
-const sourceOf = ({ source, by, isFromFile }: ObservationView) =>
-  [source, isFromFile ? `file of ${by ?? 'somebody who left'}` : by]
-    .filter((words) => words !== null && words !== '')
+const sourceOf = ({ source, by, isFromFile, survey }: ObservationView) =>
+  [survey && `survey ${survey}`, source, isFromFile ? `file of ${by ?? 'somebody who left'}` : by]
+    .filter(Boolean)
     .join(', ') || '–';
 
 /** Every epoch with what was measured, and how far it lies from both hypotheses. */
@@ -104,9 +104,11 @@ export function EpochTable({ candidate, onRemove }: EpochTableProps) {
             <Cell>{sourceOf(one)}</Cell>
             {candidate.can.vet && (
               <Cell className="relative">
-                <TextAction onClick={() => onRemove(one.id)}>
-                  Delete<span className="sr-only"> the epoch {one.observedOn}</span>
-                </TextAction>
+                {one.survey === undefined && (
+                  <TextAction onClick={() => onRemove(one.id)}>
+                    Delete<span className="sr-only"> the epoch {one.observedOn}</span>
+                  </TextAction>
+                )}
               </Cell>
             )}
           </Row>

@@ -55,6 +55,7 @@ export function ChangeRowsChart(props: ChangeRowsChartProps) {
 
   return (
     <ChartFigure
+      name="systematics"
       label={rowsSentence(props)}
       width={width}
       height={height}

@@ -1,7 +1,10 @@
 'use client';
 
-import { type ReactNode, type Ref, useState } from 'react';
+import { type ReactNode, type Ref, useRef, useState } from 'react';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import type { DataTable } from './data-table';
+import { useFigureSettings } from './figure-context';
+import { FigureMenu } from './figure-menu';
 
 /** The numbers behind a chart, as they are read out. */
 export interface ChartTable {
@@ -12,6 +15,8 @@ export interface ChartTable {
 }
 
 interface ChartFigureProps {
+  /** A word or two for the names of files: "limit-map". */
+  name: string;
   /** One sentence made from the data. */
   label: string;
   width: number;
@@ -19,6 +24,8 @@ interface ChartFigureProps {
   measure?: Ref<HTMLDivElement>;
   /** Made when it is first asked for. */
   tables(): ChartTable[];
+  /** The same unrounded, for files; left out where the page brings them. */
+  data?(): DataTable[];
   /** Marks of the drawing. */
   children: ReactNode;
   /** Controls over the drawing, in px of the drawing. */
@@ -32,8 +39,10 @@ interface ChartFigureProps {
 /** A drawing with its sentence for readers, and its numbers as a table beside it. */
 export function ChartFigure(props: ChartFigureProps) {
   const { label, width, height, measure, tables, children, overlay, header, caption } = props;
+  const settings = useFigureSettings();
+  const figure = useRef<HTMLElement>(null);
   return (
-    <figure className={`min-w-0 ${props.className ?? ''}`}>
+    <figure ref={figure} className={`min-w-0 ${props.className ?? ''}`}>
       {header}
       <div ref={measure} className="relative">
         <svg
@@ -51,6 +60,15 @@ export function ChartFigure(props: ChartFigureProps) {
       </div>
       <figcaption className="flex flex-wrap items-baseline justify-between gap-x-4 text-chart text-ink3">
         <span>{caption}</span>
+        {settings && (
+          <FigureMenu
+            settings={settings}
+            name={props.name}
+            description={label}
+            data={props.data}
+            figure={figure}
+          />
+        )}
         <AsTable tables={tables} />
       </figcaption>
     </figure>

@@ -1,13 +1,16 @@
 'use client';
 
 import { scaleLinear } from 'd3';
-import { useId, useMemo } from 'react';
-import { formatRange } from '@/lib/quantities/display';
+import { useId, useMemo, useState } from 'react';
+import { formatPlain, formatRange } from '@/lib/quantities/display';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { PointReadout } from './chart-readout';
+import { tableOfColumns } from './data-table';
 import type { Box, MapData } from './map-contours';
 import { MapAxes, MapBands, type MapFrame, mapFrame } from './map-layers';
 import { areaPath } from './paths';
 import { type MapRange, RangeHandles } from './range-box';
+import { CursorRing } from './reading-marks';
 import { useWidth } from './use-width';
 
 /** Planets drawn from a population, with what the surveys would see of them. */
@@ -41,6 +44,7 @@ export interface CompanionScatterProps {
 export function CompanionScatter(props: CompanionScatterProps) {
   const { map, subject, companions, range, onRangeChange, massMargin, semiMajorAxisMargin } = props;
   const [measure, width] = useWidth<HTMLDivElement>(760);
+  const [at, setAt] = useState<number>();
   const clipId = useId();
   const isNarrow = width < 560;
   const total = props.height ?? (isNarrow ? 380 : 500);
@@ -56,6 +60,10 @@ export function CompanionScatter(props: CompanionScatterProps) {
   const frame = useMemo(() => mapFrame(map, width, total, margin), [map, width, total, margin]);
   const { massMjup, semiMajorAxisAu, isSeen } = companions;
   const seen = isSeen.reduce((sum, value) => sum + value, 0);
+  const points = useMemo(
+    () => Array.from(massMjup, (mass, i) => ({ x: frame.x(semiMajorAxisAu[i]), y: frame.y(mass) })),
+    [massMjup, semiMajorAxisAu, frame],
+  );
   const box = {
     left: frame.x(range.semiMajorAxisMinAu),
     right: frame.x(range.semiMajorAxisMaxAu),
@@ -65,27 +73,48 @@ export function CompanionScatter(props: CompanionScatterProps) {
 
   return (
     <ChartFigure
+      name="drawn-planets"
       label={`${massMjup.length} planets drawn from the population over ${subject}: ${seen} would be seen, ${massMjup.length - seen} missed; range ${formatRange(range.massMinMjup, range.massMaxMjup, 'Jupiter masses')} at ${formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}`}
       width={width}
       height={total}
       measure={measure}
       tables={() => companionTables(companions, seen)}
+      data={() => [
+        tableOfColumns('drawn-planets', {
+          mass_mjup: massMjup,
+          semi_major_axis_au: semiMajorAxisAu,
+          would_be_seen: isSeen,
+        }),
+      ]}
       overlay={
-        onRangeChange && (
-          <RangeHandles
+        <>
+          <PointReadout
             frame={frame}
-            width={width}
-            height={total}
-            range={range}
-            bounds={{
-              massMinMjup: map.massMjup[0],
-              massMaxMjup: map.massMjup[map.massMjup.length - 1],
-              semiMajorAxisMinAu: map.semiMajorAxisAu[0],
-              semiMajorAxisMaxAu: map.semiMajorAxisAu[map.semiMajorAxisAu.length - 1],
-            }}
-            onChange={onRangeChange}
+            points={points}
+            at={at}
+            onAt={setAt}
+            label="Read the drawn planets one by one"
+            say={(index) => [
+              isSeen[index] ? 'would be seen' : 'would be missed',
+              `${formatPlain(massMjup[index], 2)} MJ at ${formatPlain(semiMajorAxisAu[index], 2)} AU`,
+            ]}
           />
-        )
+          {onRangeChange && (
+            <RangeHandles
+              frame={frame}
+              width={width}
+              height={total}
+              range={range}
+              bounds={{
+                massMinMjup: map.massMjup[0],
+                massMaxMjup: map.massMjup[map.massMjup.length - 1],
+                semiMajorAxisMinAu: map.semiMajorAxisAu[0],
+                semiMajorAxisMaxAu: map.semiMajorAxisAu[map.semiMajorAxisAu.length - 1],
+              }}
+              onChange={onRangeChange}
+            />
+          )}
+        </>
       }
     >
       <clipPath id={clipId}>
@@ -115,6 +144,7 @@ export function CompanionScatter(props: CompanionScatterProps) {
       })).map(({ id, x, y, className, r }) => (
         <circle key={id} className={className} cx={x} cy={y} r={r} />
       ))}
+      {at !== undefined && points[at] && <CursorRing {...points[at]} />}
       <MapAxes map={map} frame={frame} />
       {semiMajorAxisMargin && (
         <TopMargin curve={semiMajorAxisMargin} frame={frame} hasNames={!isNarrow} />

@@ -1,12 +1,15 @@
 'use client';
 
-import { useId, useMemo } from 'react';
+import { useId, useMemo, useState } from 'react';
 import { formatPercent, formatPlain, formatRange } from '@/lib/quantities/display';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
+import { tableOfField } from './data-table';
 import { DetectionMarks, type MapDetection } from './detection-marks';
 import type { Box, MapData } from './map-contours';
 import { ContourNumbers, contourLabels, MapAxes, MapBands, mapFrame } from './map-layers';
 import { type MapRange, RangeHandles } from './range-box';
+import { CursorRing } from './reading-marks';
 import { useWidth } from './use-width';
 
 export interface CompletenessMapChartProps {
@@ -29,9 +32,14 @@ export const mapMargin: Box = { left: 46, right: 16, top: 8, bottom: 46 };
 export function CompletenessMapChart(props: CompletenessMapChartProps) {
   const { map, subject, range, onRangeChange, detections = none, height } = props;
   const [measure, width] = useWidth<HTMLDivElement>(760);
+  const [at, setAt] = useState<ReadPlace>();
   const clipId = useId();
   const total = height ?? (width < 520 ? 300 : 350);
   const frame = useMemo(() => mapFrame(map, width, total, mapMargin), [map, width, total]);
+  const places = useMemo(
+    () => ({ columns: map.semiMajorAxisAu.map(frame.x), rows: map.massMjup.map(frame.y) }),
+    [map, frame],
+  );
   const box = range ? rangePx(range, frame) : undefined;
   const marks = box && onRangeChange ? handleBoxes(box) : [];
   const numbers = useMemo(() => {
@@ -47,23 +55,35 @@ export function CompletenessMapChart(props: CompletenessMapChartProps) {
 
   return (
     <ChartFigure
+      name="completeness-map"
       label={sentence}
       width={width}
       height={total}
       measure={measure}
       tables={() => mapTables(map, subject, detections)}
+      data={() => [mapColumns(map)]}
       overlay={
-        range &&
-        onRangeChange && (
-          <RangeHandles
+        <>
+          <ChartReadout
             frame={frame}
-            width={width}
-            height={total}
-            range={range}
-            bounds={mapEnds(map)}
-            onChange={onRangeChange}
+            columns={places.columns}
+            rows={places.rows}
+            at={at}
+            onAt={setAt}
+            label={`Read the ${subject}`}
+            say={(place) => sayNode(map, place)}
           />
-        )
+          {range && onRangeChange && (
+            <RangeHandles
+              frame={frame}
+              width={width}
+              height={total}
+              range={range}
+              bounds={mapEnds(map)}
+              onChange={onRangeChange}
+            />
+          )}
+        </>
       }
     >
       <clipPath id={clipId}>
@@ -102,6 +122,7 @@ export function CompletenessMapChart(props: CompletenessMapChartProps) {
         frame={frame}
         taken={[...numbers.map((place) => place.box), ...marks]}
       />
+      {at && <CursorRing x={places.columns[at.column]} y={places.rows[at.row]} />}
       <MapAxes map={map} frame={frame} />
     </ChartFigure>
   );
@@ -160,6 +181,22 @@ function mapSentence(
   ];
   return parts.filter(Boolean).join('; ');
 }
+
+function sayNode(map: MapData, { column, row }: ReadPlace): string[] {
+  const value = map.completeness[row * map.semiMajorAxisAu.length + column];
+  return [
+    `${formatPercent(value)} detected`,
+    `${formatPlain(map.massMjup[row], 3)} MJ, ${formatPlain(map.semiMajorAxisAu[column], 3)} AU`,
+  ];
+}
+
+const mapColumns = (map: MapData) =>
+  tableOfField(
+    'completeness',
+    ['mass_mjup', map.massMjup],
+    ['semi_major_axis_au', map.semiMajorAxisAu],
+    ['completeness', map.completeness],
+  );
 
 const readMasses = 8;
 const readAxes = 8;

@@ -1,11 +1,14 @@
 'use client';
 
 import { quantile, scaleLinear, scaleLog } from 'd3';
-import { memo, useMemo } from 'react';
+import { memo, useMemo, useState } from 'react';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
+import type { DataTable } from './data-table';
 import { bandPath, linePath, valueAt } from './paths';
+import { CursorMarks } from './reading-marks';
 import { linearTicks, logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -32,6 +35,7 @@ const samples = 60;
 /** All curves thin, the median with its 68 % band, the selected one in ink; contrast grows downwards. */
 export function ContrastChart({ curves, selected, nSigma, height }: ContrastChartProps) {
   const [measure, width] = useWidth<HTMLDivElement>(420);
+  const [at, setAt] = useState<ReadPlace>();
   const total = height ?? 300;
   const domain = useMemo(() => contrastDomain(curves), [curves]);
   const summary = useMemo(() => summarise(curves, domain.separation), [curves, domain]);
@@ -50,11 +54,26 @@ export function ContrastChart({ curves, selected, nSigma, height }: ContrastChar
 
   return (
     <ChartFigure
+      name="contrast-curves"
       label={contrastSentence(curves, summary, chosen)}
       width={width}
       height={total}
       measure={measure}
       tables={() => [contrastTable(summary, chosen)]}
+      data={() => [contrastColumns(curves)]}
+      overlay={
+        curves.length > 0 && (
+          <ChartReadout
+            frame={frame}
+            columns={summary.separation.map(x)}
+            rows={[frame.top + 60]}
+            at={at}
+            onAt={setAt}
+            label="Read the contrast along the separation"
+            say={({ column }) => sayContrast(summary, chosen, column)}
+          />
+        )
+      }
     >
       <LeftAxis
         ticks={linearTicks(...domain.contrast, frame.bottom - frame.top, 40).filter(
@@ -91,6 +110,17 @@ export function ContrastChart({ curves, selected, nSigma, height }: ContrastChar
         <text className="page-halo" x={frame.right} y={frame.top + 28} textAnchor="end">
           median, 68{'\u2009'}% band
         </text>
+      )}
+      {at && (
+        <CursorMarks
+          x={x(summary.separation[at.column])}
+          top={frame.top}
+          bottom={frame.bottom}
+          ys={[
+            ...(curves.length > 1 ? [y(summary.median[at.column])] : []),
+            ...(chosen ? [y(magAt(chosen, summary.separation[at.column]))] : []),
+          ]}
+        />
       )}
       <BottomAxis
         ticks={withUnit(xTicks, '″')}
@@ -165,6 +195,36 @@ function summarise(curves: NamedContrastCurve[], [from, to]: [number, number]): 
   return { separation, median: at(0.5), low: at(0.16), high: at(0.84) };
 }
 
+/** NaN beyond the ends of the curve. */
+function magAt({ separationArcsec: it, contrastMag }: NamedContrastCurve, arcsec: number): number {
+  const reaches = it[0] <= arcsec && it[it.length - 1] >= arcsec;
+  return reaches ? valueAt(it, contrastMag, arcsec) : Number.NaN;
+}
+
+function sayContrast(summary: Summary, chosen: NamedContrastCurve | undefined, at: number) {
+  const arcsec = summary.separation[at];
+  const mag = (value: number) =>
+    Number.isFinite(value) ? `${value.toFixed(2)} mag` : 'not reached';
+  return [
+    `${formatPlain(arcsec, 3)} arcsec`,
+    `median ${mag(summary.median[at])}`,
+    ...(Number.isFinite(summary.low[at]) && summary.low[at] < summary.high[at]
+      ? [`68\u2009% between ${mag(summary.low[at])} and ${mag(summary.high[at])}`]
+      : []),
+    ...(chosen ? [`${chosen.name} ${mag(magAt(chosen, arcsec))}`] : []),
+  ];
+}
+
+function contrastColumns(curves: NamedContrastCurve[]): DataTable {
+  return {
+    name: 'contrast-curves',
+    columns: ['target', 'separation_arcsec', 'contrast_mag'],
+    rows: curves.flatMap(({ name, separationArcsec, contrastMag }) =>
+      Array.from(separationArcsec, (arcsec, i) => [name, arcsec, contrastMag[i]]),
+    ),
+  };
+}
+
 function contrastSentence(
   curves: NamedContrastCurve[],
   summary: Summary,
@@ -192,11 +252,7 @@ function contrastTable(summary: Summary, chosen: NamedContrastCurve | undefined)
   ).map((index) => {
     const arcsec = summary.separation[index];
     const cells = [summary.low[index], summary.median[index], summary.high[index]];
-    if (chosen) {
-      const { separationArcsec: it } = chosen;
-      const reaches = it[0] <= arcsec && it[it.length - 1] >= arcsec;
-      cells.push(reaches ? valueAt(it, chosen.contrastMag, arcsec) : Number.NaN);
-    }
+    if (chosen) cells.push(magAt(chosen, arcsec));
     return [formatPlain(arcsec, 3), ...cells.map(mag)];
   });
   return {

@@ -71,6 +71,7 @@ export function CornerChart(props: CornerChartProps) {
 
   return (
     <ChartFigure
+      name="corner"
       label={cornerSentence(props)}
       width={width}
       height={height}

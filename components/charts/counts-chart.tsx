@@ -55,6 +55,7 @@ export function CountsChart(props: CountsChartProps) {
 
   return (
     <ChartFigure
+      name="counts"
       label={`Probability of each number of detections ${rateLabel}, most likely ${mostLikely(atRate)}; in a repeat with the rate from the posterior, most likely ${mostLikely(predictive)}; counted: ${counted}, with probability ${percent(atRate[counted])} at that rate`}
       width={width}
       height={height}

@@ -73,6 +73,7 @@ export function CoverageChart(props: CoverageChartProps) {
 
   return (
     <ChartFigure
+      name="coverage"
       label={coverageSentence(props)}
       width={width}
       height={height}

@@ -1,11 +1,15 @@
 'use client';
 
 import { scaleLinear, scaleLog } from 'd3';
+import { useState } from 'react';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
 import { mapMargin } from './completeness-map-chart';
+import { tableOfColumns } from './data-table';
 import { bandPath, linePath } from './paths';
+import { CursorMarks } from './reading-marks';
 import { seriesColour, seriesTextColour } from './series';
 import { textWidth } from './text-width';
 import { linearTicks, logTicks } from './ticks';
@@ -33,6 +37,7 @@ export interface DepthChartProps {
 export function DepthChart(props: DepthChartProps) {
   const { semiMajorAxisAu, series, range, height = 150, hasAxisNumbers = false } = props;
   const [measure, width] = useWidth<HTMLDivElement>(760);
+  const [at, setAt] = useState<ReadPlace>();
   const total = (of: DepthSeries) => of.depth.reduce((sum, value) => sum + value, 0);
   const ordered = [...series].sort((a, b) => total(b) - total(a));
   const layers = stackUp(ordered);
@@ -53,11 +58,27 @@ export function DepthChart(props: DepthChartProps) {
 
   return (
     <ChartFigure
+      name="depth-of-search"
       label={`Depth of search by survey against semi-major axis: ${formatSignificant(peak, 3)} stars at ${formatPlain(semiMajorAxisAu[Math.max(0, bestAt)], 2)} AU, where it is deepest; ${ordered.map(({ name }) => name).join(', ')}`}
       width={width}
       height={height}
       measure={measure}
       tables={() => [depthTable(semiMajorAxisAu, ordered)]}
+      data={() => [depthColumns(semiMajorAxisAu, ordered, top)]}
+      overlay={
+        <ChartReadout
+          frame={frame}
+          columns={semiMajorAxisAu.map(x)}
+          rows={[frame.top + 40]}
+          at={at}
+          onAt={setAt}
+          label="Read the depth of search along the semi-major axis"
+          say={({ column }) => [
+            `${formatSignificant(top[column], 3)} stars at ${formatPlain(semiMajorAxisAu[column], 3)} AU`,
+            ...ordered.map(({ name, depth }) => `${name} ${formatSignificant(depth[column], 3)}`),
+          ]}
+        />
+      }
     >
       <LeftAxis
         ticks={linearTicks(0, peak, frame.bottom - frame.top, 40).filter(({ value }) => value > 0)}
@@ -91,6 +112,14 @@ export function DepthChart(props: DepthChartProps) {
       {names.map((place) => (
         <LayerName key={place.layer.of.name} place={place} />
       ))}
+      {at && (
+        <CursorMarks
+          x={x(semiMajorAxisAu[at.column])}
+          top={frame.top}
+          bottom={frame.bottom}
+          ys={[y(top[at.column])]}
+        />
+      )}
       <BottomAxis
         ticks={hasAxisNumbers ? logTicks(semiMajorAxisAu[0], last, frame.right - frame.left) : []}
         scale={x}
@@ -197,6 +226,13 @@ function LayerName({ place }: { place: NamePlace }) {
     </g>
   );
 }
+
+const depthColumns = (au: Float64Array, ordered: DepthSeries[], sum: Float64Array) =>
+  tableOfColumns('depth-of-search', {
+    semi_major_axis_au: au,
+    ...Object.fromEntries(ordered.map(({ name, depth }) => [`${name}, stars`, depth])),
+    sum_stars: sum,
+  });
 
 function depthTable(au: Float64Array, ordered: DepthSeries[]): ChartTable {
   const picked = Array.from({ length: 12 }, (_, index) =>

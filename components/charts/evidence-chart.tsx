@@ -51,6 +51,7 @@ export function EvidenceChart({ rows, steps }: EvidenceChartProps) {
 
   return (
     <ChartFigure
+      name="population-comparison"
       label={`Logarithm of the Bayes factor against the population of the run: ${rows
         .map(
           (row) =>

@@ -20,8 +20,20 @@ const padding = 14;
 const headPx = 22;
 const linePx = 17;
 const captionPx = 13;
-const inches = { single: 88 / 25.4, double: 180 / 25.4 };
 const DOTS_PER_INCH = 300;
+const POINTS_PER_INCH = 72;
+/** Size that the text of a chart has in a column. */
+const textPt = 7.5;
+
+/** One column of a journal or two. */
+export type FigureColumn = 'single' | 'double';
+const inches: Record<FigureColumn, number> = { single: 88 / 25.4, double: 180 / 25.4 };
+
+/** Width at which a chart is drawn so that its text has its size in print [px]. */
+export function figureContentPx(column: FigureColumn): number {
+  const total = (inches[column] * POINTS_PER_INCH * captionPx) / textPt;
+  return Math.floor(total - 2 * padding);
+}
 
 /** What a stylesheet says of a mark; written into the file, where there is none. */
 const kept = [
@@ -83,11 +95,14 @@ function* rulesWithin(rules: CSSRuleList): Generator<CSSStyleRule> {
 export function drawingToSvg(
   drawing: SVGSVGElement,
   words: DrawingWords,
-  column: keyof typeof inches = 'double',
+  column: FigureColumn = 'double',
 ): string {
   const [, , width, height] = (drawing.getAttribute('viewBox') ?? '0 0 0 0').split(' ').map(Number);
   const content = withLightStyles(drawing, width);
-  const lines = words.caption.flatMap((line) => wrapLine(line, width, captionPx));
+  const said = words.caption.filter((line) => line.trim() !== '');
+  const lines = (said.length > 0 ? said : [`${words.description}.`]).flatMap((line) =>
+    wrapLine(line, width, captionPx),
+  );
   const total = {
     width: width + 2 * padding,
     height: height + headPx + 2 * padding + lines.length * linePx,
@@ -168,7 +183,7 @@ export function wrapLine(text: string, widthPx: number, fontSizePx: number): str
 }
 
 /** The same file as an image of 300 dots per inch, in the typeface of the page. */
-export async function svgToPng(svg: string, column: keyof typeof inches = 'double'): Promise<Blob> {
+export async function svgToPng(svg: string, column: FigureColumn = 'double'): Promise<Blob> {
   const withFonts = svg.replace('<title>', `<style>${await embeddedFonts()}</style><title>`);
   const address = URL.createObjectURL(new Blob([withFonts], { type: 'image/svg+xml' }));
   try {
@@ -190,7 +205,7 @@ export async function svgToPng(svg: string, column: keyof typeof inches = 'doubl
   }
 }
 
-/** Upright 400 and 600 of the page's typeface: an image reads no file beside itself. */
+/** 400, its italic, and 600 of the page's typeface: an image reads no file beside itself. */
 async function embeddedFonts(): Promise<string> {
   const rules: string[] = [];
   for (const sheet of document.styleSheets) {
@@ -200,7 +215,8 @@ async function embeddedFonts(): Promise<string> {
       const weight = style.getPropertyValue('font-weight');
       const isNeeded =
         style.getPropertyValue('font-family').includes('Source Sans 3') &&
-        (weight === '400' || weight === '600');
+        (weight === '400' ||
+          (weight === '600' && style.getPropertyValue('font-style') !== 'italic'));
       const file = /url\("?([^")]+\.woff2)"?\)/.exec(style.getPropertyValue('src'))?.[1];
       if (!isNeeded || file === undefined) continue;
       const address = new URL(file, sheet.href ?? document.baseURI);

@@ -1,9 +1,12 @@
 'use client';
 
 import { scaleLinear } from 'd3';
+import { useState } from 'react';
 import { formatLimit, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
+import { CursorMarks } from './reading-marks';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
@@ -35,6 +38,7 @@ const margin = { left: 44, right: 56, top: 48, bottom: 34 };
  */
 export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStaircaseProps) {
   const [measure, width] = useWidth<HTMLDivElement>(820);
+  const [at, setAt] = useState<ReadPlace>();
   const last = steps.at(-1);
   const zeroText =
     last?.limitWithZero === undefined ? '' : formatLimit(last.limitWithZero, quantity);
@@ -57,12 +61,37 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
 
   return (
     <ChartFigure
+      name="limit-history"
       label={`History of the upper limit: ${steps
         .map(({ change, limit }) => `${change} ${formatLimit(limit, quantity)}`)
         .join(', then ')}`}
       width={width}
       height={height}
       measure={measure}
+      data={() => [
+        {
+          name: 'limit-history',
+          columns: ['run', 'change', 'date', 'limit', 'limit_zero_detections'],
+          rows: steps.map((step) => [
+            step.run,
+            step.change,
+            new Date(step.at).toISOString(),
+            step.limit,
+            step.limitWithZero ?? null,
+          ]),
+        },
+      ]}
+      overlay={
+        <ChartReadout
+          frame={frame}
+          columns={steps.map((_, index) => x(index))}
+          rows={[frame.top + 40]}
+          at={at}
+          onAt={setAt}
+          label="Read the limit run by run"
+          say={({ column }) => sayStep(steps[column], quantity)}
+        />
+      }
       tables={() => [
         {
           caption: 'History of the upper limit',
@@ -119,6 +148,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
         </>
       )}
       <path className="step-line" d={stairs(steps, x, (step) => y(step.limit), x(end))} />
+      {at && <CursorMarks x={x(at.column)} top={frame.top} bottom={frame.bottom} />}
       {steps.map((step, index) => (
         <circle key={step.run} className="step-dot" cx={x(index)} cy={y(step.limit)} r="4.5" />
       ))}
@@ -142,6 +172,17 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
       ))}
     </ChartFigure>
   );
+}
+
+function sayStep(step: HistoryStep, quantity: RateQuantity): string[] {
+  return [
+    `${formatLimit(step.limit, quantity)}, run ${step.run}`,
+    step.change,
+    new Date(step.at).toISOString().slice(0, 10),
+    ...(step.limitWithZero === undefined
+      ? []
+      : [`${formatLimit(step.limitWithZero, quantity)} with zero detections`]),
+  ];
 }
 
 function stairs(

@@ -1,11 +1,14 @@
 'use client';
 
 import { contours, scaleLinear } from 'd3';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { formatLimit, formatPlain, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
+import { tableOfField } from './data-table';
 import { type Box, boxesMeet } from './map-contours';
+import { CursorRing } from './reading-marks';
 import { linearTicks } from './ticks';
 import { useWidth } from './use-width';
 
@@ -33,6 +36,7 @@ export function IndexPlane(props: IndexPlaneProps) {
   const { massIndex, semiMajorAxisIndex, limit, here, spread, quantity, levelLabel } = props;
   const { height = 230 } = props;
   const [measure, width] = useWidth<HTMLDivElement>(440);
+  const [at, setAt] = useState<ReadPlace>();
   const frame = {
     left: margin.left,
     right: width - margin.right,
@@ -74,11 +78,34 @@ export function IndexPlane(props: IndexPlaneProps) {
 
   return (
     <ChartFigure
+      name="limit-over-indices"
       label={`Upper limit (${levelLabel}) over both indices: ${formatLimit(here.limit, quantity)} at mass index ${formatPlain(here.massIndex)} and semi-major-axis index ${formatPlain(here.semiMajorAxisIndex)}; from ${formatLimit(Math.min(...limit), quantity)} to ${formatLimit(Math.max(...limit), quantity)} over the plane`}
       width={width}
       height={height}
       measure={measure}
       tables={() => [planeTable(props)]}
+      data={() => [
+        tableOfField(
+          'limit-over-indices',
+          ['mass_index', massIndex],
+          ['semi_major_axis_index', semiMajorAxisIndex],
+          ['limit', limit],
+        ),
+      ]}
+      overlay={
+        <ChartReadout
+          frame={frame}
+          columns={semiMajorAxisIndex.map(x)}
+          rows={massIndex.map(y)}
+          at={at}
+          onAt={setAt}
+          label="Read the limit over both indices"
+          say={({ column, row }) => [
+            `${formatLimit(limit[row * semiMajorAxisIndex.length + column], quantity)} (${levelLabel})`,
+            `mass index ${formatPlain(massIndex[row], 3)}, axis index ${formatPlain(semiMajorAxisIndex[column], 3)}`,
+          ]}
+        />
+      }
     >
       {lines.map(({ level, runs }) => (
         <path
@@ -106,6 +133,7 @@ export function IndexPlane(props: IndexPlaneProps) {
           ry={Math.abs(y(here.massIndex + spread.massIndex) - hereY)}
         />
       )}
+      {at && <CursorRing x={x(semiMajorAxisIndex[at.column])} y={y(massIndex[at.row])} />}
       <circle className="knob" cx={hereX} cy={hereY} r="6" />
       <text
         className="bound-text page-halo"

@@ -63,6 +63,7 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
   ];
   return (
     <ChartFigure
+      name="limit-by-stars"
       label={starsSentence(props)}
       width={width}
       height={height}

@@ -100,6 +100,7 @@ export function LimitFieldChart(props: LimitFieldChartProps) {
 
   return (
     <ChartFigure
+      name="limit-map"
       label={fieldSentence(props)}
       width={width}
       height={height}

@@ -69,6 +69,7 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
 
   return (
     <ChartFigure
+      name="limit-against-cutoff"
       label={sweepSentence(props)}
       width={width}
       height={height}

@@ -5,8 +5,9 @@ import { useState } from 'react';
 import { formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { PointReadout } from './chart-readout';
+import type { DataTable } from './data-table';
 import type { Box } from './map-contours';
-import { PointReadout } from './point-readout';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
@@ -74,11 +75,13 @@ export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps)
 
   return (
     <ChartFigure
+      name="motion"
       label={motionSentence({ name, epochs, track })}
       width={width}
       height={height}
       measure={measure}
       tables={() => [motionTable(name, epochs)]}
+      data={() => [motionColumns(epochs)]}
       caption={
         track.length > 0
           ? 'dashed: a source at rest behind the star; hollow: where it would be at each epoch. East is left'
@@ -299,6 +302,34 @@ export function motionSentence({ name, epochs, track }: MotionTrackChartProps): 
     );
   }
   return parts.join('; ');
+}
+
+function motionColumns(epochs: MotionEpoch[]): DataTable {
+  return {
+    name: 'epochs',
+    columns: [
+      'date',
+      'east_arcsec',
+      'east_error_arcsec',
+      'north_arcsec',
+      'north_error_arcsec',
+      'background_east_arcsec',
+      'background_north_arcsec',
+      'sigma_common_motion',
+      'sigma_background',
+    ],
+    rows: epochs.map((epoch) => [
+      epoch.date,
+      epoch.eastArcsec,
+      epoch.errorEastArcsec,
+      epoch.northArcsec,
+      epoch.errorNorthArcsec,
+      epoch.background?.eastArcsec ?? null,
+      epoch.background?.northArcsec ?? null,
+      epoch.sigmaCommon,
+      epoch.sigmaBackground,
+    ]),
+  };
 }
 
 function motionTable(name: string, epochs: MotionEpoch[]): ChartTable {

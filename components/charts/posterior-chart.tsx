@@ -1,10 +1,11 @@
 'use client';
 
 import { scaleLinear } from 'd3';
-import { useId, useState } from 'react';
+import { useId, useMemo, useState } from 'react';
 import { BottomAxis, LeftAxis } from './axes';
 import { BoundFlag } from './bound-flag';
 import { ChartFigure } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
 import { areaPath, linePath, valueAt } from './paths';
 import { PosteriorLabels } from './posterior-labels';
 import { densityTop } from './posterior-layout';
@@ -12,9 +13,12 @@ import {
   formatLevel,
   limitWithLevel,
   type PosteriorData,
+  posteriorColumns,
   posteriorSentence,
   posteriorTables,
+  sayPosterior,
 } from './posterior-words';
+import { CursorMarks } from './reading-marks';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -33,6 +37,7 @@ const margin = { top: 8, right: 14, bottom: 50 };
 export function PosteriorChart({ view, onViewChange, height, ...data }: PosteriorChartProps) {
   const [own, setOwn] = useState<PosteriorView>('density');
   const [measure, width] = useWidth<HTMLDivElement>(820);
+  const [at, setAt] = useState<ReadPlace>();
   const hatchId = useId();
   const clipId = useId();
   const shown = view ?? own;
@@ -55,6 +60,8 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
   const area = (from: number, to: number) =>
     areaPath(curve.rate, curve.density, x, y, frame.bottom, from, to);
 
+  const picked = useMemo(() => readPoints(curve.rate.length), [curve]);
+  const columns = picked.map((point) => x(curve.rate[point]));
   const unit = quantity === 'host_fraction' ? '\u2009%' : '';
   const ticks = linearTicks(0, 100 * max, frame.right - frame.left, isNarrow ? 72 : 96);
   const flagTop = isCumulative
@@ -65,11 +72,24 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
 
   return (
     <ChartFigure
+      name="posterior"
       label={posteriorSentence(data)}
       width={width}
       height={total}
       measure={measure}
       tables={() => posteriorTables(data)}
+      data={() => posteriorColumns(data)}
+      overlay={
+        <ChartReadout
+          frame={frame}
+          columns={columns}
+          rows={[frame.top + 60]}
+          at={at}
+          onAt={setAt}
+          label="Read the posterior along the rate"
+          say={({ column }) => sayPosterior(data, picked[column])}
+        />
+      }
       header={
         <ViewChoice
           shown={shown}
@@ -140,6 +160,14 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
           />
         )}
       </g>
+      {at && picked[at.column] !== undefined && (
+        <CursorMarks
+          x={columns[at.column]}
+          top={frame.top}
+          bottom={frame.bottom}
+          ys={[y(values(curve)[picked[at.column]])]}
+        />
+      )}
       <BottomAxis
         ticks={withUnit(ticks, unit)}
         scale={(percent) => x(percent / 100)}
@@ -189,6 +217,14 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
       />
     </ChartFigure>
   );
+}
+
+const mostRead = 200;
+
+/** Points of the curve at which it is read: enough for every pixel that a finger finds. */
+function readPoints(length: number): number[] {
+  const count = Math.min(length, mostRead);
+  return Array.from({ length: count }, (_, i) => Math.round((i * (length - 1)) / (count - 1)));
 }
 
 function axisName(quantity: PosteriorData['quantity'], isNarrow: boolean) {

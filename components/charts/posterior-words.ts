@@ -9,6 +9,7 @@ import {
   THIN_SPACE,
 } from '@/lib/quantities/display';
 import type { ChartTable } from './chart-figure';
+import { type DataTable, tableOfColumns } from './data-table';
 import { valueAt } from './paths';
 import type { RateCurve } from './rate-curve';
 
@@ -116,5 +117,36 @@ export function posteriorTables(data: PosteriorData): ChartTable[] {
       columns: [rateUnit(quantity), 'density', 'cumulative probability'],
       rows,
     },
+  ];
+}
+
+/** A point of the posterior in words, and of the curve beside it where there is one. */
+export function sayPosterior(data: PosteriorData, point: number): string[] {
+  const { curve, quantity, alternative } = data;
+  const rate = curve.rate[point];
+  const share = (of: RateCurve, at: number) =>
+    `${formatSignificant(100 * valueAt(of.rate, of.cumulative, at), 3)}${THIN_SPACE}%`;
+  return [
+    formatRate(rate, quantity),
+    `${share(curve, rate)} lie below`,
+    `density ${formatSignificant(curve.density[point] / (quantity === 'host_fraction' ? 100 : 1), 3)} ${quantity === 'host_fraction' ? `per${THIN_SPACE}%` : 'per planet per star'}`,
+    ...(alternative ? [`${share(alternative.curve, rate)} with zero detections`] : []),
+  ];
+}
+
+/** The curves as columns for files, unrounded. */
+export function posteriorColumns(data: PosteriorData): DataTable[] {
+  const { curve, quantity, prior, alternative, saved } = data;
+  const along = (other: RateCurve) =>
+    Float64Array.from(curve.rate, (rate) => valueAt(other.rate, other.density, rate));
+  return [
+    tableOfColumns('posterior', {
+      [quantity]: curve.rate,
+      density: curve.density,
+      cumulative: curve.cumulative,
+      ...(prior && { prior_density: prior.density }),
+      ...(alternative && { zero_detections_density: along(alternative.curve) }),
+      ...(saved && { saved_density: along(saved.curve) }),
+    }),
   ];
 }

@@ -44,6 +44,7 @@ export function RankHistogramChart(props: RankHistogramChartProps) {
   ];
   return (
     <ChartFigure
+      name="ranks"
       label={rankSentence(props)}
       width={width}
       height={height}

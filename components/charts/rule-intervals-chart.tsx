@@ -48,6 +48,7 @@ export function RuleIntervalsChart(props: RuleIntervalsChartProps) {
 
   return (
     <ChartFigure
+      name="overlap-rules"
       label={`Upper limit (${levelLabel}) under each rule for stars in several surveys: ${rows
         .map(
           (row) => `${row.name} ${row.limit === null ? 'none' : formatLimit(row.limit, quantity)}`,

@@ -1,9 +1,11 @@
 'use client';
 
 import { scaleLinear } from 'd3';
+import { useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
+import { ChartReadout, type ReadPlace } from './chart-readout';
 import { linearTicks, logTicks, type Tick } from './ticks';
 import { useWidth } from './use-width';
 
@@ -24,6 +26,7 @@ const margin = { left: 34, right: 14, top: 22, bottom: 44 };
 export function SelectionChart(props: SelectionChartProps) {
   const { name, bars, all, selected, height = 170 } = props;
   const [measure, width] = useWidth<HTMLDivElement>(320);
+  const [at, setAt] = useState<ReadPlace>();
   const count = all.length;
   const [left, right] = [margin.left, width - margin.right];
   const bottom = height - margin.bottom;
@@ -34,10 +37,32 @@ export function SelectionChart(props: SelectionChartProps) {
   const total = (counts: number[]) => counts.reduce((sum, one) => sum + one, 0);
   return (
     <ChartFigure
+      name="selection"
       label={`Stars by ${name}: ${total(selected)} of ${total(all)} selected`}
       width={width}
       height={height}
       measure={measure}
+      data={() => [
+        {
+          name: 'selection',
+          columns: [name, 'all', 'selected'],
+          rows: words.map((word, i) => [word, all[i], selected[i]]),
+        },
+      ]}
+      overlay={
+        <ChartReadout
+          frame={{ left, right, top: margin.top, bottom }}
+          columns={all.map((_, i) => x(i + 0.5))}
+          rows={[margin.top + 30]}
+          at={at}
+          onAt={setAt}
+          label={`Read the stars by ${name}`}
+          say={({ column }) => [
+            `${selected[column]} of ${all[column]} stars selected`,
+            words[column],
+          ]}
+        />
+      }
       tables={() => [
         {
           caption: `Stars by ${name}`,

@@ -1,11 +1,13 @@
 'use client';
 
 import { scaleLinear } from 'd3';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import type { DataTable } from './data-table';
 import { seriesColour } from './series';
+import { type Lasso, StarLasso } from './star-lasso';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -21,13 +23,17 @@ export interface StarDot {
 
 export interface StarDotsProps {
   stars: StarDot[];
-  selected?: string;
-  onSelect?(name: string): void;
+  /** Names of the stars that are chosen: ringed. */
+  selected?: ReadonlySet<string>;
+  /** One by a press or Enter, several by a frame drawn around them. */
+  onSelect?(names: string[]): void;
   height?: number;
 }
 
 const margin = { left: 14, right: 20, bottom: 48 };
 const spacing = 11.8;
+
+const noStars: ReadonlySet<string> = new Set();
 
 interface Placed extends StarDot {
   x: number;
@@ -61,7 +67,9 @@ export function halfOfTheSum(stars: StarDot[]): { probability: number; stars: nu
 }
 
 /** One dot a star: x is its probability of detection, stacked upwards. */
-export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsProps) {
+export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: StarDotsProps) {
+  const [at, setAt] = useState<number>();
+  const [lasso, setLasso] = useState<Lasso>();
   const [measure, width] = useWidth<HTMLDivElement>(880);
   const bottom = height - margin.bottom;
   const max = Math.max(0.05, ...stars.map(({ probability }) => probability));
@@ -81,16 +89,31 @@ export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsPr
   const { x, placed, apart } = layout;
   const radius = apart * 0.45;
   const y = (row: number) => bottom - radius - 2 - row * apart;
+  const points = placed.map((star) => ({ x: star.x, y: y(star.row) }));
   const ticks = withUnit(linearTicks(0, 100 * max, width - 34, 70), '\u2009%');
   const isNarrow = width < 520;
 
   return (
     <ChartFigure
+      name="stars"
       label={`Detection probability of ${stars.length} stars: ${half.stars} of them, from ${formatPercent(half.probability)} up, carry half of the sum`}
       width={width}
       height={height}
       measure={measure}
       tables={() => [starTable(stars)]}
+      data={() => [starColumns(stars)]}
+      overlay={
+        <StarLasso
+          frame={{ left: 0, right: width, top: 0, bottom }}
+          points={points}
+          at={at}
+          onAt={setAt}
+          say={(index) => sayStar(placed[index])}
+          lasso={lasso}
+          onLasso={setLasso}
+          onSelect={onSelect && ((chosen) => onSelect(chosen.map((index) => placed[index].name)))}
+        />
+      }
     >
       <line
         className="range-line"
@@ -116,7 +139,6 @@ export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsPr
         carry half of the sum
       </text>
       {placed.map((star) => (
-        // biome-ignore lint/a11y/noStaticElementInteractions: a shortcut for the pointer; the table of stars beside the chart does the same by keyboard
         <circle
           key={star.name}
           className="star-dot"
@@ -125,15 +147,43 @@ export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsPr
           r={radius}
           style={{
             fill: star.seriesIndex === undefined ? 'var(--ink)' : seriesColour(star.seriesIndex),
-            cursor: onSelect ? 'pointer' : undefined,
           }}
-          onClick={onSelect && (() => onSelect(star.name))}
-        >
-          <title>{`${star.name}, ${formatPercent(star.probability)}`}</title>
-        </circle>
+        />
       ))}
       {placed
-        .filter((star) => star.hosts !== undefined || star.name === selected)
+        .filter(({ name }) => selected.has(name))
+        .map((star) => (
+          <circle
+            key={star.name}
+            className="ring"
+            cx={star.x}
+            cy={y(star.row)}
+            r={radius + (selected.size > 12 ? 0.6 : 2.8)}
+          />
+        ))}
+      {at !== undefined && points[at] && (
+        <circle
+          data-screen-only=""
+          className="ring"
+          cx={points[at].x}
+          cy={points[at].y}
+          r={radius + 2.2}
+        />
+      )}
+      {lasso && (
+        <rect
+          data-screen-only=""
+          className="lasso"
+          x={Math.min(lasso.from.x, lasso.to.x)}
+          y={Math.min(lasso.from.y, lasso.to.y)}
+          width={Math.abs(lasso.to.x - lasso.from.x)}
+          height={Math.abs(lasso.to.y - lasso.from.y)}
+        />
+      )}
+      {placed
+        .filter(
+          (star) => star.hosts !== undefined || (selected.size === 1 && selected.has(star.name)),
+        )
         .map((star, index) => {
           const goesLeft = star.x > width - 150;
           const row = Math.min(y(star.row) - 40, 62 + 18 * index);
@@ -168,6 +218,20 @@ export function StarDots({ stars, selected, onSelect, height = 262 }: StarDotsPr
     </ChartFigure>
   );
 }
+
+function sayStar(star: Placed): string[] {
+  return [
+    star.name,
+    `seen with probability ${formatPercent(star.probability)}`,
+    ...(star.hosts === undefined ? [] : [`hosts ${star.hosts}`]),
+  ];
+}
+
+const starColumns = (stars: StarDot[]): DataTable => ({
+  name: 'stars',
+  columns: ['star', 'detection_probability', 'hosts'],
+  rows: stars.map(({ name, probability, hosts }) => [name, probability, hosts ?? null]),
+});
 
 function starTable(stars: StarDot[]): ChartTable {
   return {

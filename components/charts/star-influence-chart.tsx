@@ -12,6 +12,7 @@ import {
 } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { PointReadout } from './chart-readout';
 import {
   type InfluencePanel,
   type InfluenceStar,
@@ -20,7 +21,6 @@ import {
 } from './influence-panels';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
-import { PointReadout } from './point-readout';
 import { seriesColour } from './series';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
@@ -81,6 +81,7 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
 
   return (
     <ChartFigure
+      name="star-influence"
       label={influenceSentence(props)}
       width={width}
       height={height}

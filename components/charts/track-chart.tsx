@@ -1,9 +1,12 @@
 'use client';
 
 import { scaleLinear, scaleLog } from 'd3';
+import { useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
+import { PointReadout } from './chart-readout';
+import type { DataTable } from './data-table';
 import { linePath } from './paths';
 import { linearTicks, logTicks } from './ticks';
 import { useWidth } from './use-width';
@@ -31,6 +34,7 @@ const margin = { left: 46, right: 62, top: 26, bottom: 46 };
 export function TrackChart(props: TrackChartProps) {
   const { subject, ageMyr, tracks, isDifference = false, height = 340 } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
+  const [at, setAt] = useState<number>();
   const [left, right] = [margin.left, width - margin.right];
   const bottom = height - margin.bottom;
   const all = tracks.flatMap(({ values }) => [...values].filter(Number.isFinite));
@@ -40,14 +44,36 @@ export function TrackChart(props: TrackChartProps) {
   const [first, last] = [ageMyr[0], ageMyr[ageMyr.length - 1]];
   const x = scaleLog([first, last], [left, right]);
   const y = scaleLinear(ends, isDifference ? [bottom, margin.top] : [margin.top, bottom]);
+  const points = tracks.flatMap(({ massMjup, values }) =>
+    [...values].flatMap((value, i) =>
+      Number.isFinite(value)
+        ? [{ massMjup, age: ageMyr[i], value, x: x(ageMyr[i]), y: y(value) }]
+        : [],
+    ),
+  );
   const names = placeNames(tracks, ageMyr, x, y);
   return (
     <ChartFigure
+      name="cooling-tracks"
       label={trackSentence(props, ends)}
       width={width}
       height={height}
       measure={measure}
       tables={() => [trackTable(props)]}
+      data={() => [trackColumns(props)]}
+      overlay={
+        <PointReadout
+          frame={{ left, right, top: margin.top, bottom }}
+          points={points}
+          at={at}
+          onAt={setAt}
+          label={`Read ${subject} by mass and age`}
+          say={(index) => [
+            `${points[index].value.toFixed(2)} mag`,
+            `${formatPlain(points[index].massMjup)} MJ at ${formatPlain(points[index].age, 3)} Myr`,
+          ]}
+        />
+      }
     >
       <text className="quiet" x={0} y={12}>
         {subject}
@@ -73,6 +99,15 @@ export function TrackChart(props: TrackChartProps) {
           strokeWidth={1.4}
         />
       ))}
+      {at !== undefined && points[at] && (
+        <circle
+          data-screen-only=""
+          className="cursor-dot"
+          cx={points[at].x}
+          cy={points[at].y}
+          r="4"
+        />
+      )}
       {names.map((name) => (
         <text key={name.text} className="page-halo" x={name.x + 5} y={name.y + 4}>
           {name.text}
@@ -118,6 +153,16 @@ function placeNames(
 function trackSentence({ subject, ageMyr, tracks }: TrackChartProps, ends: [number, number]) {
   const ages = `${formatPlain(ageMyr[0])} to ${formatPlain(ageMyr[ageMyr.length - 1])} Myr`;
   return `${subject} against age, ${ages}, for ${tracks.length} masses from ${formatPlain(tracks[0]?.massMjup ?? 0)} to ${formatPlain(tracks.at(-1)?.massMjup ?? 0)} Jupiter masses: from ${ends[0].toFixed(1)} to ${ends[1].toFixed(1)} mag`;
+}
+
+function trackColumns({ ageMyr, tracks }: TrackChartProps): DataTable {
+  return {
+    name: 'tracks',
+    columns: ['mass_mjup', 'age_myr', 'mag'],
+    rows: tracks.flatMap(({ massMjup, values }) =>
+      Array.from(ageMyr, (age, i) => [massMjup, age, values[i]]),
+    ),
+  };
 }
 
 function trackTable({ subject, ageMyr, tracks }: TrackChartProps): ChartTable {

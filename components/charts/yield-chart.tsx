@@ -45,6 +45,7 @@ export function YieldChart(props: YieldChartProps) {
   const atLeast = atLeastEach(distribution);
   return (
     <ChartFigure
+      name="expected-detections"
       label={yieldSentence(props)}
       width={width}
       height={height}

@@ -5,6 +5,8 @@ export interface RequestOptions {
   method?: 'GET' | 'POST' | 'PATCH' | 'DELETE';
   /** Sent as JSON. */
   body?: unknown;
+  /** Sent as it is, with its own type. */
+  content?: Blob;
   signal?: AbortSignal;
 }
 
@@ -45,20 +47,27 @@ export async function requestBytes(
   return response.arrayBuffer();
 }
 
+/** The same for a file that the server makes. */
+export async function requestFile(path: string, options: RequestOptions): Promise<Blob> {
+  const response = await send(path, options, '*/*');
+  return response.blob();
+}
+
 async function send(
   path: string,
-  { method = 'GET', body, signal }: RequestOptions,
+  { method = 'GET', body, content, signal }: RequestOptions,
   accept = 'application/json',
 ): Promise<Response> {
   const headers: Record<string, string> = { accept };
   if (body !== undefined) headers['content-type'] = 'application/json';
+  if (content !== undefined) headers['content-type'] = content.type;
   let response: Response;
   try {
     response = await fetch(path, {
       method,
       headers,
       signal,
-      body: body === undefined ? undefined : JSON.stringify(body),
+      body: body === undefined ? content : JSON.stringify(body),
     });
   } catch (reason) {
     if (signal?.aborted) throw reason;

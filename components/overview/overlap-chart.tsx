@@ -21,6 +21,7 @@ export function OverlapChart({ list }: { list: SurveyList }) {
   const nameOf = (slug: string) => surveys.find((survey) => survey.slug === slug)?.name ?? slug;
   return (
     <ChartFigure
+      name="overlaps"
       label={`Stars by set of surveys: ${sets.map((set) => `${set.stars} in ${set.surveys.map(nameOf).join(' and ')}`).join(', ')}`}
       width={width}
       height={height}

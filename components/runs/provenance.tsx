@@ -26,6 +26,12 @@ export function provenanceSteps(collaboration: string, run: RunView): Provenance
       what: inputs.surveys.length === 1 ? names : `${inputs.surveys.length} surveys`,
       by: inputs.surveys.length === 1 ? undefined : names,
     },
+    ...(inputs.shared ?? []).map(({ survey, owner, attribution, version }) => ({
+      kind: 'Shared',
+      what: `${survey}, by ${owner}`,
+      by: attribution,
+      fingerprint: fingerprint(version),
+    })),
     {
       kind: 'Cooling model',
       what: inputs.cooling,

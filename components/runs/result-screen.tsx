@@ -5,6 +5,7 @@ import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
+import { WithdrawnNotices } from '@/components/sharing/withdrawn-notice';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
@@ -149,6 +150,7 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
             onChanged={refresh}
           />
         )}
+        <WithdrawnNotices surveys={finished?.withdrawn} />
         {finished?.hasOlderInputs && (
           <Notice tone="warn" title="Made with older inputs.">
             Newer maps, companions or targets exist than run {finished.number} used. It stays as it

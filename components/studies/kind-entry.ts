@@ -1,4 +1,5 @@
 import type { ComponentType } from 'react';
+import type { DataTable } from '@/components/charts/data-table';
 import type { Fault } from '@/lib/errors';
 import type { RateQuantity } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
@@ -7,7 +8,6 @@ import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { ResultOf } from '@/lib/schemas/study-results';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
-import type { DataTable } from './data-files';
 
 /** A finished run, of which a question is asked. */
 export interface AskedRun {

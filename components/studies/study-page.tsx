@@ -1,6 +1,7 @@
 'use client';
 
-import { useRef, useState } from 'react';
+import { useState } from 'react';
+import { FigureFrame } from '@/components/figures/figure-frame';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { askStudy, useStudiesOfKind, useStudy } from '@/components/hooks/use-studies';
@@ -16,6 +17,7 @@ import type { RunView } from '@/lib/schemas/runs';
 import type { StudySummary } from '@/lib/schemas/studies';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
 import { AnswerExports } from './answer-exports';
+import { answerFigures } from './answer-files';
 import { AnswerConditions, AnswerProvenance } from './answer-foot';
 import { answerOf, askedRun, useAnsweredRun } from './answered-run';
 import { EarlierAnswers } from './earlier-answers';
@@ -44,7 +46,6 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
   const [chosenId, setChosenId] = useState(props.answerId);
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
-  const area = useRef<HTMLDivElement>(null);
   const { data: all, error, mutate } = useStudiesOfKind(collaboration, kind);
   const studies = all?.filter((study) => study.run.analysisKey === analysis.key);
   const open = studies?.filter(({ job }) => job.status === 'waiting' || job.status === 'running');
@@ -90,7 +91,7 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
           { label: 'further question' },
         ]}
         context={kindWords[kind].question}
-        actions={entry && answer && <AnswerExports entry={entry} answer={answer} area={area} />}
+        actions={entry && answer && <AnswerExports entry={entry} answer={answer} />}
       />
       {!asked || !entry ? (
         <EmptyState
@@ -152,6 +153,7 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
               <section className="min-w-0">
                 <SectionOpener
                   title={`Answer ${study.number}`}
+                  help={kindWords[kind].help}
                   context={settingsInWords(study.settings)}
                 />
                 {study.headline !== null && (
@@ -167,9 +169,9 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
                     </Notice>
                   </div>
                 )}
-                <div ref={area} className="min-w-0">
+                <FigureFrame collaboration={collaboration} {...answerFigures(entry, answer)}>
                   <entry.Answer {...answer} />
-                </div>
+                </FigureFrame>
               </section>
               <AnswerConditions asked={answered} settings={settingsInWords(study.settings)} />
               <AnswerProvenance collaboration={collaboration} study={study} />

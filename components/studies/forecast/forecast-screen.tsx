@@ -1,6 +1,6 @@
 'use client';
 
-import { useRef } from 'react';
+import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudy } from '@/components/hooks/use-studies';
 import { LinkButton } from '@/components/ui/link-button';
@@ -12,6 +12,7 @@ import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import { AnswerExports } from '../answer-exports';
+import { answerFigures } from '../answer-files';
 import { AnswerConditions, AnswerProvenance } from '../answer-foot';
 import { answerOf, useAnsweredRun } from '../answered-run';
 import { kinds } from '../kinds';
@@ -32,7 +33,6 @@ interface ForecastScreenProps {
 export function ForecastScreen(props: ForecastScreenProps) {
   const { collaboration, analysis, run, runPopulation, canAsk } = props;
   const { data: study = props.study, error, mutate } = useStudy(collaboration, props.study.id);
-  const area = useRef<HTMLDivElement>(null);
   const answered = useAnsweredRun({ collaboration, analysis, run, runPopulation, study });
   const answer = answered && answerOf('forecast', study, answered);
   const entry = kinds.forecast;
@@ -64,7 +64,7 @@ export function ForecastScreen(props: ForecastScreenProps) {
                 Change and ask again
               </LinkButton>
             )}
-            {answer && <AnswerExports entry={entry} answer={answer} area={area} />}
+            {answer && <AnswerExports entry={entry} answer={answer} />}
           </>
         }
       />
@@ -86,9 +86,9 @@ export function ForecastScreen(props: ForecastScreenProps) {
                   <i>Forecast.</i> {study.headline}
                 </p>
               )}
-              <div ref={area} className="min-w-0">
+              <FigureFrame collaboration={collaboration} {...answerFigures(entry, answer)}>
                 <entry.Answer {...answer} />
-              </div>
+              </FigureFrame>
             </section>
             <AnswerConditions
               asked={answer.asked}

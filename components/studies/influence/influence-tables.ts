@@ -1,4 +1,4 @@
-import type { DataTable } from '../data-files';
+import type { DataTable } from '@/components/charts/data-table';
 import type { AnswerProps } from '../kind-entry';
 
 export function influenceTables({ asked, result }: AnswerProps<'influence'>): DataTable[] {

@@ -1,7 +1,7 @@
 import { createElement } from 'react';
 import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
-import { nearestPoint } from '@/components/charts/point-readout';
+import { nearestPoint } from '@/components/charts/chart-readout';
 import { StarInfluenceChart } from '@/components/charts/star-influence-chart';
 import { halfInWords, isStrong } from '@/components/studies/influence/influence-words';
 import { LeftOutTable } from '@/components/studies/influence/left-out-table';

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { writeAnswerJson, writeDataCsv } from '@/components/studies/data-files';
+import { dataCsv } from '@/components/charts/data-table';
+import { writeAnswerJson } from '@/components/studies/answer-files';
 import {
   cornerParameters,
   cornerPlanes,
@@ -174,22 +175,21 @@ describe('files of an answer', () => {
     resultDigest: 'abc',
   } as unknown as StudyView;
 
-  it('hold every number of the drawing, unrounded, with what it rests on', () => {
+  it('hold every number of the drawing to the last bit, under one header', () => {
     const result = buildSweep();
     const tables = sweepTables({ asked, study, settings: study.settings as never, result });
-    const csv = writeDataCsv(['A-31, run 18, draft', 'two\nlines'], tables);
-    const lines = csv.trimEnd().split('\n');
-    expect(lines[1]).toBe('# two lines');
-    expect(lines[2]).toBe(
+    expect(tables).toHaveLength(1);
+    const lines = dataCsv(tables[0]).trimEnd().split('\n');
+    expect(lines[0]).toBe(
       'semi_major_axis_max_au,limit,limit_no_detection,detections,exposure_stars,is_set_by_prior',
     );
-    expect(lines).toHaveLength(3 + result.value.length);
-    expect(Number(lines[3].split(',')[1])).toBeCloseTo(result.limit[0], 9);
+    expect(lines).toHaveLength(1 + result.value.length);
+    expect(Number(lines[1].split(',')[1])).toBe(result.limit[0]);
   });
 
   it('quote what would break a line, and say draft in the whole answer', () => {
     const table = { name: 'x', columns: ['a'], rows: [['one, "two"'], [null]] };
-    expect(writeDataCsv([], [table])).toBe('a\n"one, ""two"""\n\n');
+    expect(dataCsv(table)).toBe('a\n"one, ""two"""\n""\n');
     const json = JSON.parse(writeAnswerJson(study, ['Prior: uniform']));
     expect(json).toMatchObject({ state: 'draft', number: 3, conditions: ['Prior: uniform'] });
     expect(json.job).toBeUndefined();

@@ -1,0 +1,186 @@
+'use client';
+
+import { useMemo, useState } from 'react';
+import type { StarDot } from '@/components/charts/star-dots';
+import { SelectField } from '@/components/ui/select-field';
+import { TextAction } from '@/components/ui/text-action';
+import type { PopulationView, RateQuantity } from '@/lib/inference';
+import { describeLevel } from '@/lib/inference';
+import { formatLimit, formatPercent } from '@/lib/quantities/display';
+import type { RunInputs } from '@/lib/schemas/runs';
+import { limitWithout, withoutWords } from './limit-without';
+import type { LiveSample } from './live-sample';
+import type { LiveSetting } from './live-setting';
+
+interface LeaveOutProps {
+  inputs: RunInputs;
+  stars: StarDot[];
+  /** Undefined until the maps are there. */
+  sample?: LiveSample;
+  view?: PopulationView;
+  setting: LiveSetting;
+  limit: number;
+  quantity: RateQuantity;
+  chosen: ReadonlySet<string>;
+  onChosen(names: ReadonlySet<string>): void;
+}
+
+interface Kept {
+  name: string;
+  names: ReadonlySet<string>;
+}
+
+const choose = 'choose stars, press a dot, or draw a frame around dots';
+
+/** The limit without some stars, and those answers that are kept to compare with. */
+export function LeaveOut(props: LeaveOutProps) {
+  const { inputs, stars, sample, view, setting, limit, quantity, chosen, onChosen } = props;
+  const [kept, setKept] = useState<Kept[]>([]);
+  const groups = useMemo(() => groupsOf(inputs, stars), [inputs, stars]);
+  const without = useMemo(
+    () => (sample && view ? limitWithout(sample, view, setting, chosen) : undefined),
+    [sample, view, setting, chosen],
+  );
+  const picked = groups.find(({ names }) => isSame(names, chosen));
+  const level = describeLevel(setting.credibleLevel);
+  const words = without && withoutWords(without, picked?.name);
+  return (
+    <div className="mt-3 grid gap-3 text-note">
+      <div className="flex flex-wrap items-end gap-x-6 gap-y-2">
+        <div className="w-80 max-w-full">
+          <SelectField
+            label="Limit without some stars"
+            value={picked?.value ?? ''}
+            onChange={(event) =>
+              onChosen(groups.find(({ value }) => value === event.target.value)?.names ?? new Set())
+            }
+            options={[
+              { value: '', label: chosen.size > 0 ? `${chosen.size} stars of a frame` : choose },
+              ...groups.map(({ value, label }) => ({ value, label })),
+            ]}
+          />
+        </div>
+        {chosen.size > 0 && (
+          <p className="min-w-0 pb-2" aria-live="polite">
+            {without === undefined || words === undefined ? (
+              'Without these stars there is no answer to compare with.'
+            ) : (
+              <>
+                Without {words}:{' '}
+                <span className="limit">{formatLimit(without.limit, quantity)}</span> ({level})
+                instead of {formatLimit(limit, quantity)}
+              </>
+            )}
+          </p>
+        )}
+        {chosen.size > 0 && without && words && (
+          <span className="flex gap-4 pb-1.5">
+            {!kept.some(({ names }) => isSame(names, chosen)) && (
+              <TextAction
+                icon="compare"
+                onClick={() => setKept([...kept, { name: words, names: chosen }])}
+              >
+                Keep as a comparison
+              </TextAction>
+            )}
+            <TextAction icon="undo" onClick={() => onChosen(new Set())}>
+              Choose none
+            </TextAction>
+          </span>
+        )}
+      </div>
+      {kept.length > 0 && sample && view && (
+        <KeptAnswers
+          {...props}
+          sample={sample}
+          view={view}
+          kept={kept}
+          onDrop={(name) => setKept(kept.filter((one) => one.name !== name))}
+        />
+      )}
+    </div>
+  );
+}
+
+/** Each follows the controls; they are not part of the run, and go with the page. */
+function KeptAnswers(
+  props: LeaveOutProps & {
+    sample: LiveSample;
+    view: PopulationView;
+    kept: Kept[];
+    onDrop(name: string): void;
+  },
+) {
+  const { sample, view, setting, kept, quantity, limit, onDrop, onChosen } = props;
+  return (
+    <ul className="grid gap-1 border-rule border-t pt-2">
+      <li className="text-ink3">
+        Kept beside {formatLimit(limit, quantity)} of all {view.stars} stars, all at{' '}
+        {describeLevel(setting.credibleLevel)}; they follow the controls and no run records them
+      </li>
+      {kept.map(({ name, names }) => {
+        const answer = limitWithout(sample, view, setting, names);
+        return (
+          <li key={name} className="flex flex-wrap items-baseline gap-x-4">
+            <span className="limit w-28 text-right">
+              {answer ? formatLimit(answer.limit, quantity) : 'no answer'}
+            </span>
+            <button type="button" className="text-act" onClick={() => onChosen(names)}>
+              without {name}
+            </button>
+            <span className="text-ink3">
+              {answer && limit > 0 ? `${(answer.limit / limit).toFixed(2)} times the limit` : ''}
+            </span>
+            <TextAction icon="close" onClick={() => onDrop(name)}>
+              Drop
+            </TextAction>
+          </li>
+        );
+      })}
+    </ul>
+  );
+}
+
+interface Group {
+  value: string;
+  label: string;
+  name: string;
+  names: ReadonlySet<string>;
+}
+
+/** Surveys, hosts, then star by star: what the keyboard chooses where the pointer draws a frame. */
+function groupsOf(inputs: RunInputs, stars: StarDot[]): Group[] {
+  const ofSurvey = inputs.surveys.map(({ id, name }): Group => {
+    const names = inputs.stars.filter(({ surveys }) => surveys.includes(id)).map((one) => one.name);
+    return {
+      value: `survey ${id}`,
+      label: `all ${names.length} stars of ${name}`,
+      name: `the ${names.length} stars of ${name}`,
+      names: new Set(names),
+    };
+  });
+  const hosts = stars.filter(({ hosts: of }) => of !== undefined).map(({ name }) => name);
+  const single = [...stars]
+    .sort((a, b) => b.probability - a.probability)
+    .map(
+      ({ name, probability }): Group => ({
+        value: `star ${name}`,
+        label: `${name}, ${formatPercent(probability)}`,
+        name,
+        names: new Set([name]),
+      }),
+    );
+  const all = hosts.length > 1 ? [groupOfHosts(hosts)] : [];
+  return [...(ofSurvey.length > 1 ? ofSurvey : []), ...all, ...single];
+}
+
+const groupOfHosts = (hosts: string[]): Group => ({
+  value: 'hosts',
+  label: `all ${hosts.length} hosts of detections`,
+  name: `the ${hosts.length} hosts`,
+  names: new Set(hosts),
+});
+
+function isSame(one: ReadonlySet<string>, other: ReadonlySet<string>): boolean {
+  return one.size === other.size && [...one].every((name) => other.has(name));
+}
