@@ -24,6 +24,9 @@ export class SurveyRow extends Model<
   declare leadId: CreationOptional<string | null>;
   declare position: CreationOptional<number>;
   declare mapSettings: MapSettings;
+  /** Of a survey that another collaboration shares: it is read only here. */
+  declare shareId: CreationOptional<string | null>;
+  /** A moment ahead is the end of a shared survey that its owner has announced. */
   declare archivedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
 }
@@ -42,6 +45,7 @@ export function defineSurvey(sequelize: Sequelize): void {
       leadId: DataTypes.UUID,
       position: DataTypes.INTEGER,
       mapSettings: DataTypes.JSONB,
+      shareId: DataTypes.UUID,
       archivedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
     },

@@ -11,13 +11,26 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain } from '@/lib/quantities/display';
-import type { StarEntry, StarPage } from '@/lib/schemas/stars';
+import type { StarPage } from '@/lib/schemas/stars';
 import { PairCard } from './pair-card';
 import { StarEntries } from './star-entries';
 import { ValueChoice } from './value-choice';
 
-function EntryMap({ collaboration, entry }: { collaboration: string; entry: StarEntry }) {
-  const { data } = useMap(collaboration, entry.mapId);
+function StoredMap({
+  collaboration,
+  mapId,
+  title,
+  subject,
+  otherwise,
+}: {
+  collaboration: string;
+  mapId: string | null;
+  title: string;
+  subject: string;
+  /** Why there is none. */
+  otherwise: string;
+}) {
+  const { data } = useMap(collaboration, mapId);
   const map = useMemo(
     () =>
       data && {
@@ -29,19 +42,71 @@ function EntryMap({ collaboration, entry }: { collaboration: string; entry: Star
   );
   return (
     <div className="min-w-0">
-      <h3 className="mb-1 font-semibold">{entry.survey.name}</h3>
+      <h3 className="mb-1 font-semibold">{title}</h3>
       {map ? (
-        <CompletenessMapChart
-          map={map}
-          subject={`detection probability of ${entry.name} in ${entry.survey.name}`}
-          detections={[]}
-        />
+        <CompletenessMapChart map={map} subject={subject} detections={[]} />
       ) : (
-        <p className="py-2 text-ink3 text-note">
-          {entry.mapFault ?? (entry.mapState === 'none' ? 'No map.' : 'The map is on its way.')}
-        </p>
+        <p className="py-2 text-ink3 text-note">{otherwise}</p>
       )}
     </div>
+  );
+}
+
+const rules: Record<string, string> = {
+  'same-position': 'place by place',
+  deepest: 'the deepest survey counts',
+  independent: 'as independent observations',
+};
+
+/** One map a survey, and the one that runs use where several surveys list the star. */
+function Maps({ collaboration, star }: { collaboration: string; star: StarPage }) {
+  const { combined, entries } = star;
+  return (
+    <>
+      <SectionOpener
+        title="Completeness maps"
+        help="completeness-map"
+        context={entries.length > 1 ? 'one a survey, and the combined one' : undefined}
+      />
+      <div className="grid gap-x-10 gap-y-6 md:grid-cols-2 xl:grid-cols-3">
+        {entries.map((entry) => (
+          <StoredMap
+            key={entry.targetId}
+            collaboration={collaboration}
+            mapId={entry.mapId}
+            title={entry.survey.name}
+            subject={`detection probability of ${entry.name} in ${entry.survey.name}`}
+            otherwise={
+              entry.mapFault ??
+              (entry.mapState === 'waiting' ? 'The map is on its way.' : 'No map.')
+            }
+          />
+        ))}
+        {entries.length > 1 && (
+          <div className="min-w-0">
+            <StoredMap
+              collaboration={collaboration}
+              mapId={combined?.mapId ?? null}
+              title="Combined"
+              subject={`detection probability of ${star.name} in all its surveys`}
+              otherwise={
+                combined
+                  ? 'The map is on its way.'
+                  : 'No run has combined the surveys of this star yet.'
+              }
+            />
+            {combined && (
+              <p className="text-ink3 text-note">
+                {combined.surveys.join(' and ')}, {rules[combined.rule] ?? combined.rule}; as{' '}
+                <Link href={`/${collaboration}/analyses/${combined.key}`}>{combined.key}</Link>, run{' '}
+                {combined.run} used it
+              </p>
+            )}
+          </div>
+        )}
+      </div>
+      <RampKey label="detection probability" />
+    </>
   );
 }
 
@@ -138,20 +203,17 @@ export function StarScreen({
         </section>
       )}
       <section className="mb-9">
-        <SectionOpener title="Completeness maps" help="completeness-map" context="one a survey" />
-        <div className="grid gap-x-10 gap-y-6 md:grid-cols-2 xl:grid-cols-3">
-          {star.entries.map((entry) => (
-            <EntryMap key={entry.targetId} collaboration={collaboration} entry={entry} />
-          ))}
-        </div>
-        <RampKey label="detection probability" />
+        <Maps collaboration={collaboration} star={star} />
       </section>
       <section className="mb-9">
         <SectionOpener title="Companions and candidates" context={`${star.companions.length}`} />
         <ul className="divide-y divide-rule">
           {star.companions.map((one) => (
             <li key={one.id} className="py-1.5">
-              <b>{one.name}</b>, {one.status}, {one.survey}
+              <Link className="font-semibold" href={`/${collaboration}/candidates/${one.id}`}>
+                {one.name}
+              </Link>
+              , {one.status}, {one.survey}
               {one.massMjup !== null && (
                 <>
                   , {formatPlain(one.massMjup, 3)}

@@ -5,6 +5,8 @@ import { useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
 import { SurveyMaps } from '@/components/maps/survey-maps';
+import { SharedNotice } from '@/components/sharing/shared-notice';
+import { SurveySharing } from '@/components/sharing/survey-sharing';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
 import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
@@ -14,6 +16,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import { Tabs } from '@/components/ui/tabs';
 import { TextAction } from '@/components/ui/text-action';
 import type { BoxedDefinition } from '@/lib/schemas/populations';
+import type { Shares } from '@/lib/schemas/sharing';
 import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
 import type { UploadView } from '@/lib/schemas/uploads';
 import { CompanionTable } from './companion-table';
@@ -31,6 +34,7 @@ interface SurveyScreenProps {
   targets: TargetList;
   companions: CompanionView[];
   uploads: UploadView[];
+  shares: Shares;
   coolingName: string | null;
   /** The newest shared population: detection probabilities are averages over it. */
   population: BoxedDefinition | null;
@@ -122,10 +126,15 @@ export function SurveyScreen(props: SurveyScreenProps) {
         context={
           <>
             <i>{survey.band}</i> band{survey.description && `, ${asClause(survey.description)}`}
-            {hasYears(survey) && `, observed ${observedYears(survey)}`}; lead{' '}
-            {survey.lead?.name ?? 'nobody'}
+            {hasYears(survey) && `, observed ${observedYears(survey)}`};{' '}
+            {survey.shared
+              ? `shared by ${survey.shared.owner}`
+              : `lead ${survey.lead?.name ?? 'nobody'}`}
             <span className="block text-ink3 text-note">
-              Maps: {describeMapSettings(survey.mapSettings, coolingName)}{' '}
+              Maps:{' '}
+              {survey.shared?.scope === 'maps'
+                ? `as ${survey.shared.owner} made them`
+                : describeMapSettings(survey.mapSettings, coolingName)}{' '}
               {survey.can.change && (
                 <TextAction onClick={() => setSetting(true)}>
                   Change<span className="sr-only"> how the maps are made</span>
@@ -148,6 +157,18 @@ export function SurveyScreen(props: SurveyScreenProps) {
         }
       />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {survey.shared && (
+        <SharedNotice
+          collaboration={collaboration}
+          name={survey.name}
+          shared={survey.shared}
+          onRefreshed={() => {
+            void mutate();
+            void mutateTargets();
+            router.refresh();
+          }}
+        />
+      )}
       <MapSettingsDialog
         collaboration={collaboration}
         survey={survey}
@@ -254,6 +275,21 @@ export function SurveyScreen(props: SurveyScreenProps) {
                     />
                   ),
                 },
+                ...(survey.shared
+                  ? []
+                  : [
+                      {
+                        id: 'sharing',
+                        label: 'Sharing',
+                        content: (
+                          <SurveySharing
+                            collaboration={collaboration}
+                            survey={survey}
+                            initial={props.shares}
+                          />
+                        ),
+                      },
+                    ]),
               ]}
             />
             {selected && (

@@ -1,5 +1,5 @@
 import { type ChildProcess, spawn } from 'node:child_process';
-import { writeFile } from 'node:fs/promises';
+import { readFile, writeFile } from 'node:fs/promises';
 import path from 'node:path';
 import { type Actor, EVERY_SCOPE } from '@/lib/access/actor';
 import { hashPassword } from '@/lib/access/passwords';
@@ -22,11 +22,13 @@ import { endWithLauncher } from './death-signal.mjs';
 import { askQuestions } from './demo/analyses';
 import { companionsOf } from './demo/companions';
 import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
+import { addNeighbours, memberOf, NEIGHBOURS } from './demo/neighbours';
 import { demoPeople, makePassword } from './demo/people';
 import { type DemoSurvey, demoSurveys, drawSky } from './demo/sky';
 import { addLaterEpochs, bringIn } from './demo/store';
 
 const SLUG = 'breakwater';
+const SIGN_INS = 'demo-sign-ins.json';
 const say = (text: string) => process.stdout.write(`${text}\n`);
 
 interface SignIn {
@@ -157,67 +159,95 @@ async function removeHalfMade(collaboration: CollaborationRow): Promise<void> {
   });
 }
 
+const areNeighboursThere = async () =>
+  (await CollaborationRow.findOne({ where: { slug: NEIGHBOURS.slug } }))?.settings
+    .isDemonstrationReady === true;
+
+/** The second collaboration is made by itself, so that an older demonstration gets it too. */
+async function seedNeighbours(): Promise<void> {
+  if (await areNeighboursThere()) return;
+  await CollaborationRow.destroy({ where: { slug: NEIGHBOURS.slug } });
+  await PersonRow.destroy({ where: { email: NEIGHBOURS.email } });
+  const host = await memberOf(SLUG, 'marrand@breakwater.example');
+  const signIn = await addNeighbours(host, drawSky(), finishJob);
+  const file = path.join(config().dataDirectory, SIGN_INS);
+  const others: SignIn[] = JSON.parse(await readFile(file, 'utf8'));
+  const signIns = [...others.filter(({ email }) => email !== signIn.email), signIn];
+  await writeSecret(SIGN_INS, `${JSON.stringify(signIns, null, 2)}\n`);
+  await CollaborationRow.update(
+    { settings: { isDemonstrationReady: true } },
+    { where: { slug: NEIGHBOURS.slug } },
+  );
+  say('a second collaboration shares a survey with it, and offers another');
+}
+
 async function seed(): Promise<void> {
   database();
   const known = await CollaborationRow.findOne({ where: { slug: SLUG } });
-  if (known?.settings.isDemonstrationReady === true) {
+  const isReady = known?.settings.isDemonstrationReady === true;
+  if (isReady && (await areNeighboursThere())) {
     say('the demonstration is there already');
     return;
   }
-  if (known) await removeHalfMade(known);
+  if (known && !isReady) await removeHalfMade(known);
   const worker = startWorker();
   const ended = new Promise<void>((resolve) => worker.once('exit', () => resolve()));
   try {
-    const { actors, signIns } = await makePeople();
-    const actorOf = (key: string) => {
-      const actor = actors.get(key);
-      if (!actor) throw new Error(`nobody is called ${key}`);
-      return actor;
-    };
-    await bringIn(
-      actorOf('marrand'),
-      'cooling-tables',
-      'warm-harbour.csv',
-      coolingFile(0),
-      undefined,
-      {
-        title: 'Harbour, high-entropy start',
-      },
-    );
-    await bringIn(
-      actorOf('marrand'),
-      'cooling-tables',
-      'cold-harbour.csv',
-      coolingFile(1.4),
-      undefined,
-      { title: 'Harbour, low-entropy start' },
-    );
-    const stars = drawSky();
-    const ids: Record<string, string> = {};
-    for (const survey of demoSurveys)
-      ids[survey.slug] = await importSurvey(actorOf(survey.lead), survey, stars);
-    const { leadAnalysisId } = await askQuestions({
-      actors: { statistician: actorOf('linhart'), student: actorOf('hadley') },
-      surveyIds: ids as never,
-      finish: finishJob,
-    });
-    const { token } = await createToken(actorOf('linhart'), {
-      name: 'Demonstration',
-      scopes: ['read', 'write', 'run'],
-      days: 365,
-    });
-    await writeSecret('demo-token', `${token}\n`);
-    await writeSecret('demo-sign-ins.json', `${JSON.stringify(signIns, null, 2)}\n`);
-    await CollaborationRow.update(
-      { settings: { isDemonstrationReady: true, leadAnalysisId } },
-      { where: { slug: SLUG } },
-    );
-    const { stars: count, entries } = await listSurveys(actorOf('marrand'));
-    say(`${count} stars in ${entries} entries, and the demonstration's analyses, are ready`);
+    if (!isReady) await seedBreakwater();
+    await seedNeighbours();
   } finally {
     worker.kill('SIGTERM');
     await ended;
   }
+}
+
+async function seedBreakwater(): Promise<void> {
+  const { actors, signIns } = await makePeople();
+  const actorOf = (key: string) => {
+    const actor = actors.get(key);
+    if (!actor) throw new Error(`nobody is called ${key}`);
+    return actor;
+  };
+  await bringIn(
+    actorOf('marrand'),
+    'cooling-tables',
+    'warm-harbour.csv',
+    coolingFile(0),
+    undefined,
+    {
+      title: 'Harbour, high-entropy start',
+    },
+  );
+  await bringIn(
+    actorOf('marrand'),
+    'cooling-tables',
+    'cold-harbour.csv',
+    coolingFile(1.4),
+    undefined,
+    { title: 'Harbour, low-entropy start' },
+  );
+  const stars = drawSky();
+  const ids: Record<string, string> = {};
+  for (const survey of demoSurveys)
+    ids[survey.slug] = await importSurvey(actorOf(survey.lead), survey, stars);
+  const { leadAnalysisId } = await askQuestions({
+    actors: { statistician: actorOf('linhart'), student: actorOf('hadley') },
+    surveyIds: ids as never,
+    finish: finishJob,
+  });
+  const { token } = await createToken(actorOf('linhart'), {
+    name: 'Demonstration',
+    scopes: ['read', 'write', 'run'],
+    days: 365,
+  });
+  await writeSecret('demo-token', `${token}\n`);
+  await writeSecret(SIGN_INS, `${JSON.stringify(signIns, null, 2)}\n`);
+  await CollaborationRow.update(
+    { settings: { isDemonstrationReady: true, leadAnalysisId } },
+    { where: { slug: SLUG } },
+  );
+  const { stars: count, entries } = await listSurveys(actorOf('marrand'));
+  say(`${count} stars in ${entries} entries, and the demonstration's analyses, are ready`);
 }
 
 seed()

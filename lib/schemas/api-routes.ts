@@ -48,6 +48,7 @@ import { mapViewSchema } from './sensitivity';
 import { starRoutes } from './star-routes';
 import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
 import {
+import { sharingRoutes } from './sharing-routes';
   companionSchema,
   coolingTableSchema,
   createSurveySchema,

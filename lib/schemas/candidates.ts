@@ -107,6 +107,8 @@ export type CandidateList = z.infer<typeof candidateListSchema>;
 
 export const observationSchema = z.object({
   id: idSchema,
+  /** The other survey that brought it, for the same companion of the same star. */
+  survey: z.string().optional(),
   observedOn: z.string(),
   julianYear: z.number(),
   separationArcsec: z.number(),
@@ -172,8 +174,11 @@ export type VerdictView = z.infer<typeof verdictSchema>;
 export const candidateDetailSchema = candidateSchema.extend({
   target: z.object({
     id: idSchema,
+    starId: idSchema.optional(),
     distancePc: z.number().nullable(),
     ageMyr: z.number().nullable(),
+    /** Where age and distance are those adopted for the star: what the estimates rest on. */
+    adopted: z.array(z.string()).optional(),
   }),
   reference: z.string().nullable(),
   /** In order of time. */

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { idSchema, moment } from './common';
 import { jobSchema } from './jobs';
+import { sharedInputSchema, withdrawnSurveySchema } from './sharing';
 
 const quantitySchema = z.enum(['companions_per_star', 'host_fraction']);
 const numbers = z.array(z.number());
@@ -109,6 +110,8 @@ export const runInputsSchema = z.object({
       }),
     )
     .optional(),
+  /** Surveys of other collaborations, where there are any, each as it stood. */
+  shared: z.array(sharedInputSchema).optional(),
   leftOut: z.array(z.object({ name: z.string(), survey: z.string(), reason: z.string() })),
 });
 export type RunInputs = z.infer<typeof runInputsSchema>;
@@ -223,6 +226,8 @@ export const runSummarySchema = z.object({
   resultDigest: z.string().nullable(),
   /** A newer input exists than the one this run used. */
   hasOlderInputs: z.boolean(),
+  /** Shared surveys of this run that their owners take back, or have taken back. */
+  withdrawn: z.array(withdrawnSurveySchema).optional(),
 });
 export type RunSummary = z.infer<typeof runSummarySchema>;
 

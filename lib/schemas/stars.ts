@@ -251,6 +251,16 @@ export const starPageSchema = starSchema.extend({
       share: z.number(),
     }),
   ),
+  /** The newest map that a run combined from several surveys. */
+  combined: z
+    .object({
+      mapId: idSchema,
+      rule: z.string(),
+      surveys: z.array(z.string()),
+      key: z.string(),
+      run: z.number(),
+    })
+    .nullable(),
   matches: z.array(starMatchSchema),
   can: z.object({ combine: z.boolean(), adopt: z.boolean() }),
 });

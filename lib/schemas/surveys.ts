@@ -3,6 +3,7 @@ import { idSchema, lineSchema, moment, personRefSchema, slugSchema } from './com
 import { startConditionSchema } from './cooling';
 import { jobSchema } from './jobs';
 import { mapSettingsSchema } from './sensitivity';
+import { sharedFromSchema } from './sharing';
 
 export type { MapSettings } from './sensitivity';
 
@@ -57,7 +58,9 @@ export const surveySchema = z.object({
   /** Sum of detection probabilities under the newest shared population, if there is one. */
   summedCompleteness: z.number().nullable(),
   mapJob: jobSchema.nullable(),
-  can: z.object({ change: z.boolean(), import: z.boolean() }),
+  can: z.object({ change: z.boolean(), import: z.boolean(), offer: z.boolean().optional() }),
+  /** Where another collaboration owns it. */
+  shared: sharedFromSchema.optional(),
   createdAt: moment,
 });
 export type SurveyView = z.infer<typeof surveySchema>;

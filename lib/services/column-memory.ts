@@ -6,6 +6,7 @@ import { idSchema } from '@/lib/schemas/common';
 import type { ColumnMapping } from '@/lib/schemas/uploads';
 import { ColumnMemoryRow, PersonRow, type SurveyRow } from '@/models';
 import { canonicalJson, sha256Hex } from '@/models/digest';
+import { refuseShared } from './sharing/shared-surveys';
 import { findSurvey, isLead } from './surveys';
 
 interface ReadColumn {
@@ -78,6 +79,7 @@ export async function listMappings(actor: Actor, slug: string): Promise<ColumnMa
 export async function forgetMapping(actor: Actor, slug: string, id: string): Promise<void> {
   const survey = await findSurvey(actor, slug);
   demand(actor, 'import', { isLead: isLead(actor, survey) });
+  await refuseShared(survey);
   const isId = idSchema.safeParse(id).success;
   const gone = isId ? await ColumnMemoryRow.destroy({ where: { id, surveyId: survey.id } }) : 0;
   if (gone === 0) throw new NotFound('column mapping');

@@ -45,7 +45,7 @@ function readUse(actor: Actor, id: string, [ageMin, ageMax]: [number, number]): 
      left join lateral (select
        coalesce(t.age_lower_myr, t.age_min_myr, t.age_myr) as low,
        coalesce(t.age_upper_myr, t.age_max_myr, t.age_myr) as high) age on true
-     where s.collaboration_id = $1 and s.archived_at is null
+     where s.collaboration_id = $1 and (s.archived_at is null or s.archived_at > now())
        and coalesce(s.map_settings->'cooling'->>'coolingTableId', $5) = $2
      group by s.id order by s.position`,
     {

@@ -1,4 +1,3 @@
-import { Op } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { Conflict, NotFound } from '@/lib/errors';
@@ -12,6 +11,7 @@ import { readMapStates } from '@/models/map-standings';
 import { unpackMap } from '@/models/map-values';
 import { recordAudit } from './audit';
 import { describeJob } from './jobs';
+import { notArchived } from './sharing/archived';
 import { findSurvey, isLead } from './surveys';
 
 async function findMap(actor: Actor, id: string): Promise<CompletenessMapRow> {
@@ -125,7 +125,7 @@ export async function startMaps(actor: Actor, slug: string): Promise<JobView> {
 export async function readMapStore(actor: Actor): Promise<MapStore> {
   demand(actor, 'read');
   const rows = await SurveyRow.findAll({
-    where: { collaborationId: actor.collaborationId, archivedAt: { [Op.is]: null } },
+    where: { collaborationId: actor.collaborationId, ...notArchived() },
     order: [['position', 'ASC']],
   });
   const surveys: MapStore['surveys'] = [];

@@ -11,6 +11,7 @@ import { listAnalyses } from './analyses';
 import { describeJobs } from './jobs';
 import { leadOf } from './lead-analysis';
 import { describeSteps, type HistoryRun } from './limit-history';
+import { sharingNotices } from './sharing/notices';
 import { listSurveys } from './surveys';
 
 const LOG_LENGTH = 12;
@@ -145,6 +146,8 @@ const EVERYBODYS_NEWS = [
   'run-analysis',
   'remove-analysis',
   'vet',
+  'offer-survey',
+  'accept-survey',
 ];
 
 /** Where a collaboration stands, and what waits for a person. */
@@ -159,7 +162,7 @@ export async function getOverview(actor: Actor): Promise<Overview> {
     readLog(collaborationId),
   ]);
   const lead = leadOf(analyses, row.settings);
-  const [history, candidates] = await Promise.all([
+  const [history, candidates, sharing] = await Promise.all([
     lead ? readHistory(lead.id) : [],
     undecidedCandidates(actor, lead),
   ]);
@@ -176,6 +179,7 @@ export async function getOverview(actor: Actor): Promise<Overview> {
       ...failedMaps(slug, surveys.surveys),
       ...candidates,
     ],
+      ...sharing,
     jobs,
     log: log.map(({ at, who, what }) => ({ at: at.toISOString(), who, what })),
     can: {

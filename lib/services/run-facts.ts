@@ -23,6 +23,7 @@ interface Row {
   stars: number | null;
   resultDigest: string | null;
   hasOlderInputs: boolean;
+  withdrawn: RunSummary['withdrawn'] | null;
 }
 
 /** A target that a run of this recipe counts, apart from what its sample asks of the star. */
@@ -75,7 +76,11 @@ const FACTS = `
     r.result->'answer'->'interval68' as interval68,
     jsonb_array_length(r.result->'counted') as detections,
     (r.result->>'stars')::int as stars, r.result_digest as "resultDigest",
-    ${OLDER_INPUTS} as "hasOlderInputs"
+    ${OLDER_INPUTS} as "hasOlderInputs",
+    (select jsonb_agg(jsonb_build_object('survey', s.name, 'owner', x.owner_name,
+        'from', x.withdrawn_from, 'why', x.withdrawn_why) order by s.position)
+      from survey s join share x on x.id = s.share_id
+      where s.id = any(q.survey_ids) and x.withdrawn_from is not null) as withdrawn
   from run r join job j on j.id = r.job_id left join person p on p.id = r.created_by
     left join sample chosen on chosen.id = (r.recipe->>'sampleId')::uuid
     cross join lateral (
@@ -87,8 +92,9 @@ const FACTS = `
 export async function readRunFacts(analysisIds: string[]): Promise<RunFacts[]> {
   if (analysisIds.length === 0) return [];
   const rows = await database().query<Row>(FACTS, { bind: [analysisIds], type: QueryTypes.SELECT });
-  return rows.map((row) => ({
+  return rows.map(({ withdrawn, ...row }) => ({
     ...row,
+    ...(withdrawn && { withdrawn }),
     createdAt: row.createdAt.toISOString(),
     finishedAt: row.finishedAt?.toISOString() ?? null,
   }));

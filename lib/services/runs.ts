@@ -6,6 +6,7 @@ import { populationBox } from '@/lib/population';
 import { enqueueRun } from '@/lib/queue/enqueue';
 import { findEdgeOutside, findEmptySelection, type MapReach } from '@/lib/queue/preconditions';
 import { refuseUndecidedIn } from '@/lib/queue/undecided-pairs';
+import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { idSchema } from '@/lib/schemas/common';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
@@ -99,6 +100,7 @@ async function refuseUnanswerable(
   recipe: AnalysisRecipe,
   transaction: Transaction,
 ): Promise<void> {
+  await refuseWithdrawn(actor.collaborationId, recipe.surveyIds, transaction);
   const [selection] = await database().query<Selection>(
     `select count(*)::int as "all", (count(*) filter (where t.left_out_reason is null))::int as "left",
        max(m.mass_mjup[1]) as "massMinMjup",

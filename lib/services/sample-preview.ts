@@ -1,4 +1,3 @@
-import { Op } from 'sequelize';
 import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
@@ -13,6 +12,7 @@ import { SurveyRow, TargetRow } from '@/models';
 import { applyAdopted, loadAdopted } from '@/models/adopted-values';
 import { findLeftOut, gatherStarFacts, type StarFacts } from '@/models/sample-selection';
 import { checkSurveys, surveyNames } from './samples';
+import { notArchived } from './sharing/archived';
 
 const BINS = 14;
 
@@ -38,7 +38,7 @@ export async function readEntries(actor: Actor, surveyIds?: readonly string[]) {
   const surveys = await SurveyRow.findAll({
     where: {
       collaborationId: actor.collaborationId,
-      ...(surveyIds ? { id: [...surveyIds] } : { archivedAt: { [Op.is]: null } }),
+      ...(surveyIds ? { id: [...surveyIds] } : notArchived()),
     },
     order: [
       ['position', 'ASC'],

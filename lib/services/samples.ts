@@ -3,6 +3,7 @@ import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { InputError, NotFound } from '@/lib/errors';
+import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import { describeSample } from '@/lib/schemas/sample-words';
 import {
   type createSampleSchema,
@@ -92,6 +93,7 @@ export async function checkSurveys(
   if ((await SurveyRow.count({ where, transaction })) < surveyIds.length) {
     throw new NotFound('survey');
   }
+  await refuseWithdrawn(actor.collaborationId, surveyIds, transaction);
 }
 
 /** A new sample, version 1; with `versionOf`, a new version of that one. Versions never change. */

@@ -31,6 +31,7 @@ const ENTRIES = `
       where c.target_id = t.id and c.replaced_at is null) as epochs
   from target t join survey s on s.id = t.survey_id
   where t.collaboration_id = $1 and ($2::uuid is null or t.star_id = $2)
+    and (s.share_id is null or not is_withdrawn(s.share_id))
   order by s.position, s.id, t.folded_name`;
 
 /** Everything known of a collaboration's stars, or of one of them. */

@@ -182,6 +182,21 @@ function analysesOf(starId: string): Promise<StarPage['analyses']> {
   );
 }
 
+/** The newest map that a run combined from several surveys' entries of the star. */
+async function combinedOf(starId: string): Promise<StarPage['combined']> {
+  const [found] = await database().query<NonNullable<StarPage['combined']>>(
+    `select m.id as "mapId", m.inputs->>'rule' as rule, 'A-' || a.number as key, r.number as run,
+       (select array_agg(v.name order by v.position) from survey v
+         where v.id = any(s.survey_ids)) as surveys
+     from run_star s join run r on r.id = s.run_id join analysis a on a.id = r.analysis_id
+       join completeness_map m on m.id = s.map_id
+     where root_of_star(s.star_id) = $1 and cardinality(s.survey_ids) > 1
+     order by r.finished_at desc limit 1`,
+    { bind: [starId], type: QueryTypes.SELECT },
+  );
+  return found ?? null;
+}
+
 /** One star with everything that hangs on it. */
 export async function getStar(actor: Actor, id: string): Promise<StarPage> {
   const star = await findStar(actor, id);
@@ -190,20 +205,22 @@ export async function getStar(actor: Actor, id: string): Promise<StarPage> {
   const rows = sky.entriesOf.get(star.id);
   if (!rows) throw new NotFound('star');
   const targetIds = rows.map(({ targetId }) => targetId);
-  const [probabilities, curves, companions, analyses, matches, isLead] = await Promise.all([
-    probabilitiesOf(collaborationId, rows),
-    ContrastCurveRow.findAll({
-      where: { targetId: targetIds, replacedAt: null },
-      order: [
-        ['epoch', 'ASC'],
-        ['band', 'ASC'],
-      ],
-    }),
-    CompanionRow.findAll({ where: { targetId: targetIds }, order: [['name', 'ASC']] }),
-    analysesOf(star.id),
-    matchesOf(actor, star.id),
-    leadsStar(actor, rows),
-  ]);
+  const [probabilities, curves, companions, analyses, matches, isLead, combined] =
+    await Promise.all([
+      probabilitiesOf(collaborationId, rows),
+      ContrastCurveRow.findAll({
+        where: { targetId: targetIds, replacedAt: null },
+        order: [
+          ['epoch', 'ASC'],
+          ['band', 'ASC'],
+        ],
+      }),
+      CompanionRow.findAll({ where: { targetId: targetIds }, order: [['name', 'ASC']] }),
+      analysesOf(star.id),
+      matchesOf(actor, star.id),
+      leadsStar(actor, rows),
+      combinedOf(star.id),
+    ]);
   const ownerOf = new Map(rows.map((row) => [row.targetId, row]));
   const surveyOf = (targetId: string) => ownerOf.get(targetId)?.surveyName ?? '';
   return {
@@ -235,6 +252,7 @@ export async function getStar(actor: Actor, id: string): Promise<StarPage> {
       reference: row.reference,
     })),
     analyses,
+    combined,
     matches,
     can: { combine: may(actor, 'combine'), adopt: may(actor, 'adopt-values', { isLead }) },
   };

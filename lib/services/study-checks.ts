@@ -1,5 +1,6 @@
 import type { Transaction } from 'sequelize';
 import { needsHostMass, type Population } from '@/lib/population';
+import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import type { RatePriorInput } from '@/lib/schemas/analyses';
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { SettingsOf, StudyKind, StudySettings } from '@/lib/schemas/study-settings';
@@ -179,6 +180,7 @@ export async function refuseUnanswerable(
   settings: StudySettings,
   transaction: Transaction,
 ): Promise<void> {
+  await refuseWithdrawn(run.collaborationId, run.recipe.surveyIds, transaction);
   const population = await PopulationRow.findOne({
     where: { id: run.recipe.populationId, collaborationId: run.collaborationId },
     transaction,

@@ -14,6 +14,7 @@ import type {
 import { database, inTransaction, JobRow, PersonRow, SurveyRow, TargetRow } from '@/models';
 import { recordAudit } from './audit';
 import { describeJob } from './jobs';
+import { describeShared, refuseShared } from './sharing/shared-surveys';
 import { currentYardstick, summariseMaps } from './survey-depth';
 
 /** A survey's short name for addresses: "Halyard II" → "halyard-ii". */
@@ -80,7 +81,8 @@ async function countOverlaps(collaborationId: string) {
     `select surveys, count(*) as stars from (
        select t.star_id, array_agg(s.slug order by s.position) as surveys
        from target t join survey s on s.id = t.survey_id
-       where t.collaboration_id = $1 and s.archived_at is null group by t.star_id) held
+       where t.collaboration_id = $1 and (s.archived_at is null or s.archived_at > now())
+       group by t.star_id) held
      group by surveys order by count(*) desc, surveys`,
     { bind: [collaborationId], type: QueryTypes.SELECT },
   );
@@ -122,17 +124,24 @@ async function sensitivityOf(row: SurveyRow) {
   };
 }
 
-async function describeSurvey(actor: Actor, row: SurveyRow, counts?: Counts): Promise<SurveyView> {
-  const [lead, job, sensitivity] = await Promise.all([
+async function describeSurvey(
+  actor: Actor,
+  row: SurveyRow,
+  counts: Counts | undefined,
+  look = { forNewer: false },
+): Promise<SurveyView> {
+  const [lead, job, sensitivity, shared] = await Promise.all([
     row.leadId ? PersonRow.findByPk(row.leadId) : null,
     JobRow.findOne({
       where: { surveyId: row.id, kind: 'compute-maps' },
       order: [['createdAt', 'DESC']],
     }),
     sensitivityOf(row),
+    describeShared(actor, row, look),
   ]);
   const lookup = (key: keyof Counts) => Number(counts?.[key] ?? 0);
   const item = { isLead: isLead(actor, row) };
+  const isOwn = row.shareId === null;
   return {
     id: row.id,
     slug: row.slug,
@@ -143,7 +152,7 @@ async function describeSurvey(actor: Actor, row: SurveyRow, counts?: Counts): Pr
     observedTo: row.observedTo,
     lead: lead && { id: lead.id, name: lead.name },
     position: row.position,
-    isArchived: row.archivedAt !== null,
+    isArchived: row.archivedAt !== null && row.archivedAt <= new Date(),
     // Settings stored earlier lack the rules that came later.
     mapSettings: mapSettingsSchema.parse(row.mapSettings),
     targets: lookup('targets'),
@@ -163,7 +172,12 @@ async function describeSurvey(actor: Actor, row: SurveyRow, counts?: Counts): Pr
     },
     ...sensitivity,
     mapJob: job && (await describeJob(job)),
-    can: { change: may(actor, 'change-survey', item), import: may(actor, 'import', item) },
+    can: {
+      change: isOwn && may(actor, 'change-survey', item),
+      import: isOwn && may(actor, 'import', item),
+      offer: isOwn && may(actor, 'offer-survey', item),
+    },
+    ...(shared && { shared }),
     createdAt: row.createdAt.toISOString(),
   };
 }
@@ -174,7 +188,7 @@ export async function listSurveys(actor: Actor): Promise<SurveyList> {
   const rows = await SurveyRow.findAll({
     where: { collaborationId: actor.collaborationId },
     order: [
-      [database().literal('archived_at is not null') as never, 'ASC'],
+      [database().literal('archived_at <= now() is true') as never, 'ASC'],
       ['position', 'ASC'],
     ],
   });
@@ -256,6 +270,7 @@ export async function updateSurvey(
 ): Promise<SurveyView> {
   const row = await findSurvey(actor, slug);
   demand(actor, 'change-survey', { isLead: isLead(actor, row) });
+  await refuseShared(row);
   const { isArchived, ...fields } = input;
   if (fields.leadId) await demandMember(actor, fields.leadId);
   await inTransaction(async (transaction) => {

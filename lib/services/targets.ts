@@ -15,6 +15,7 @@ import {
 } from '@/models';
 import { wasChosenForCompanion } from '@/models/sample-selection';
 import { recordAudit } from './audit';
+import { refuseShared } from './sharing/shared-surveys';
 import { currentYardstick, summariseMaps } from './survey-depth';
 import { findSurvey, isLead } from './surveys';
 
@@ -100,6 +101,9 @@ function describeTarget(
     checks: checksOf(target, curves),
   };
 }
+
+const isTakenBack = ({ shareId, archivedAt }: SurveyRow) =>
+  shareId !== null && archivedAt !== null && archivedAt <= new Date();
 
 async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise<TargetView[]> {
   const mass = survey.mapSettings.massMjup;
@@ -187,6 +191,7 @@ export async function markTarget(
     const attributes = { ...target.attributes, selectedForCompanion: mark };
     await target.update(
       {
+  await refuseShared(survey);
         ...(reason !== undefined && { leftOutReason: reason }),
         ...(mark !== undefined && { attributes }),
       },

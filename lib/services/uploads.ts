@@ -18,6 +18,7 @@ import { keepMapping } from './column-memory';
 import { dryRun, type Source } from './dry-run';
 import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
 import { noteChanges, takeStanding } from './intake/changes';
+import { refuseShared } from './sharing/shared-surveys';
 import { findSurvey, isLead } from './surveys';
 
 export async function describeUpload(row: UploadRow): Promise<UploadView> {
@@ -104,6 +105,7 @@ async function surveyFor(
   }
   const survey = await findSurvey(actor, slug);
   demand(actor, 'import', { isLead: isLead(actor, survey) });
+  await refuseShared(survey);
   return survey;
 }
 

@@ -109,7 +109,7 @@ test('a statistician takes a survey from its files to an upper limit', async ({
     await page.getByRole('link', { name: /in an analysis/ }).click();
     await expect(page.getByRole('heading', { level: 1, name: 'New analysis' })).toBeVisible();
     await expect(page.getByText(/4–60.*10–200/).first()).toBeVisible();
-    for (const name of ['SANDBAR', 'HALYARD', 'PETREL', 'CURLEW'])
+    for (const name of ['SANDBAR', 'HALYARD', 'PETREL', 'CURLEW', 'LANTERN'])
       await page.getByRole('checkbox', { name }).uncheck();
     await page.getByRole('checkbox', { name: 'GANNET' }).check();
     await page.getByLabel('Name', { exact: true }).fill('Twelve stars');

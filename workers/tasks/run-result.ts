@@ -176,6 +176,12 @@ function extraConditions({ inputs, stack, counted, output, warnings }: Parts): s
       `${quantity === 'age' ? 'Ages' : 'Distances'}: ${quantity}s table ${table}, which adopts one for ${stars} of these stars; else as each survey says`,
     );
   }
+  for (const { survey, owner, attribution, version, scope } of inputs.shared ?? []) {
+    const what = scope === 'maps' ? 'its maps only, ' : '';
+    conditions.push(
+      `Shared: ${survey} by ${owner}, ${what}version ${version.slice(0, 8)}: ${attribution}`,
+    );
+  }
   if (inputs.leftOut.length > 0) {
     conditions.push(`Left out: ${inputs.leftOut.length} entries, each with a reason`);
   }

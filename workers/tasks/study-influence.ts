@@ -7,6 +7,7 @@ import { combineMaps } from './run-maps';
 import type { Sample } from './run-sample';
 import { readMaps } from './stored-maps';
 import type { StudyPerformer, StudyWork } from './study-context';
+import { currentStars } from './study-roots';
 import { loadRunSample } from './study-sample';
 
 type Result = ResultOf<'influence'>;
@@ -69,9 +70,10 @@ async function groupStars(
   { run, collaborationId }: StudyWork,
   groupBy: 'moving-group' | 'spectral-type',
 ): Promise<Map<string, number[]>> {
+  const current = await currentStars(run.inputs.stars.map(({ starId }) => starId));
   const rows = await TargetRow.findAll({
     attributes: ['starId', 'surveyId', 'movingGroup', 'spectralType'],
-    where: { collaborationId, starId: run.inputs.stars.map(({ starId }) => starId) },
+    where: { collaborationId, starId: [...current.values()] },
   });
   const groupOf = ({ movingGroup, spectralType }: TargetRow) =>
     groupBy === 'moving-group'
@@ -80,7 +82,7 @@ async function groupStars(
   const groups = new Map<string, number[]>();
   for (const [i, { starId, surveys }] of run.inputs.stars.entries()) {
     const own = surveys.map((id) =>
-      rows.find((row) => row.starId === starId && row.surveyId === id),
+      rows.find((row) => row.starId === current.get(starId) && row.surveyId === id),
     );
     const name = own.map((row) => row && groupOf(row)).find((one) => one != null);
     if (name != null) groups.set(name, [...(groups.get(name) ?? []), i]);

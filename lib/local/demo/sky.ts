@@ -140,7 +140,7 @@ function nameOf(raDeg: number, decDeg: number): string {
 
 const round = (value: number, digits: number) => Number(value.toFixed(digits));
 
-function drawStar(
+export function drawStar(
   random: RandomStream,
   surveys: string[],
   fixed?: { raDeg: number; decDeg: number },

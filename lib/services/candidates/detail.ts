@@ -7,6 +7,7 @@ import { isLead } from '../surveys';
 import { describeCandidate, statedOf } from './describe';
 import { estimateAxis, estimateMass } from './estimates';
 import { findCandidate } from './find';
+import { epochsElsewhere, withAdopted } from './host';
 import { leadRanges } from './lead-ranges';
 import { motionOf, testHypotheses } from './motion';
 
@@ -51,9 +52,13 @@ async function namesFor(
   };
 }
 
-function describeObservation(row: CompanionObservationRow, names: Names): ObservationView {
+function describeObservation(
+  { row, survey }: { row: CompanionObservationRow; survey: string | null },
+  names: Names,
+): ObservationView {
   return {
     id: row.id,
+    ...(survey !== null && { survey }),
     observedOn: row.observedOn,
     julianYear: julianYearOf(row.observedOn),
     separationArcsec: row.separationArcsec,
@@ -98,31 +103,44 @@ export async function getCandidate(actor: Actor, id: string): Promise<CandidateD
     CompanionVerdictRow.findAll({ where: { companionId: row.id }, order: [['number', 'ASC']] }),
     leadRanges(actor),
   ]);
-  const names = await namesFor([...observations, ...verdicts]);
-  const mass = await estimateMass(found, observations);
-  const axis = estimateAxis(found, observations);
-  const { motion, motionMissing } = motionOf(target);
+  const elsewhere = await epochsElsewhere(found);
+  const { found: hosted, adopted } = await withAdopted(found);
+  const seen = [...observations.map((one) => ({ row: one, survey: null })), ...elsewhere].sort(
+    (a, b) => (a.row.observedOn < b.row.observedOn ? -1 : 1),
+  );
+  const names = await namesFor([...seen.map((one) => one.row), ...verdicts]);
+  // Mass and axis rest on the survey's own epochs: the host's magnitudes are the survey's.
+  const mass = await estimateMass(hosted, observations);
+  const axis = estimateAxis(hosted, observations);
+  const { motion, motionMissing } = motionOf(hosted.target);
   const counts = { observations: observations.length, proposals: openProposals(verdicts) };
   return {
     ...describeCandidate(found, counts, ranges),
     target: {
       id: target.id,
-      distancePc: target.distancePc ?? (target.parallaxMas ? 1000 / target.parallaxMas : null),
-      ageMyr: target.ageMyr,
+      starId: target.starId,
+      distancePc:
+        hosted.target.distancePc ??
+        (hosted.target.parallaxMas ? 1000 / hosted.target.parallaxMas : null),
+      ageMyr: hosted.target.ageMyr,
+      adopted,
     },
     reference: row.reference,
     history: verdicts.map((verdict) => describeVerdict(verdict, names)),
-    seen: observations.map((observation) => describeObservation(observation, names)),
+    seen: seen.map((one) => describeObservation(one, names)),
     motion,
     motionMissing,
-    hypotheses: testHypotheses(motion, observations),
+    hypotheses: testHypotheses(
+      motion,
+      seen.map((one) => one.row),
+    ),
     mass: mass.estimate,
     massMissing: mass.missing,
     axis: axis.estimate,
     axisMissing: axis.missing,
     can: {
-      vet: may(actor, 'vet', { isLead: isLead(actor, survey) }),
-      propose: may(actor, 'write-note'),
+      vet: survey.shareId === null && may(actor, 'vet', { isLead: isLead(actor, survey) }),
+      propose: survey.shareId === null && may(actor, 'write-note'),
     },
   };
 }

@@ -13,6 +13,7 @@ import {
   SurveyRow,
   TargetRow,
 } from '@/models';
+import { notWithdrawn } from '../sharing/archived';
 import { findSurvey } from '../surveys';
 import { describeCandidate } from './describe';
 import { openProposals } from './detail';
@@ -53,7 +54,7 @@ async function readAll(actor: Actor, query: CandidateQuery): Promise<Loaded[]> {
         as: 'target',
         required: true,
         ...(survey && { where: { surveyId: survey.id } }),
-        include: [{ model: SurveyRow, as: 'survey', required: true }],
+        include: [{ model: SurveyRow, as: 'survey', required: true, where: notWithdrawn() }],
       },
     ],
     order: [literal('"target"."folded_name"'), ['foldedName', 'ASC'], ['id', 'ASC']],

@@ -6,6 +6,7 @@ import type { AddObservation, CandidateDetail } from '@/lib/schemas/candidates';
 import { idSchema } from '@/lib/schemas/common';
 import { CompanionObservationRow, inTransaction } from '@/models';
 import { recordAudit } from '../audit';
+import { refuseShared } from '../sharing/shared-surveys';
 import { isLead } from '../surveys';
 import { getCandidate } from './detail';
 import { findCandidate } from './find';
@@ -21,6 +22,7 @@ export async function addObservation(
 ): Promise<CandidateDetail> {
   const { row, target, survey } = await findCandidate(actor, id);
   demand(actor, 'vet', { isLead: isLead(actor, survey) });
+  await refuseShared(survey);
   try {
     await inTransaction(async (transaction) => {
       await row.reload({ transaction, lock: transaction.LOCK.UPDATE });
@@ -63,6 +65,7 @@ export async function removeObservation(
     : null;
   if (!observation) throw new NotFound('epoch');
   demand(actor, 'vet', { isLead: isLead(actor, survey) });
+  await refuseShared(survey);
   await inTransaction(async (transaction) => {
     await observation.destroy({ transaction });
     const { observedOn, separationArcsec, positionAngleDeg } = observation;

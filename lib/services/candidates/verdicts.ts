@@ -13,10 +13,12 @@ import {
   type TargetRow,
 } from '@/models';
 import { recordAudit } from '../audit';
+import { refuseShared } from '../sharing/shared-surveys';
 import { isLead } from '../surveys';
 import { isOpen } from './describe';
 import { getCandidate } from './detail';
 import { findCandidate } from './find';
+import { withAdopted } from './host';
 import { keptValues, newAxis, newMass, type Values } from './verdict-values';
 
 const DEFAULT_PROBABILITY: Partial<Record<CompanionRow['status'], number>> = {
@@ -77,7 +79,9 @@ export async function giveVerdict(
   const { row, target, survey } = found;
   if (input.isProposal) demand(actor, 'write-note');
   else demand(actor, 'vet', { isLead: isLead(actor, survey) });
-  const [mass, axis] = await Promise.all([newMass(found, input), newAxis(found, input)]);
+  await refuseShared(survey);
+  const { found: hosted } = await withAdopted(found);
+  const [mass, axis] = await Promise.all([newMass(hosted, input), newAxis(hosted, input)]);
   await inTransaction(async (transaction) => {
     await row.reload({ transaction, lock: transaction.LOCK.UPDATE });
     const decided = { companionId: row.id, isProposal: false };

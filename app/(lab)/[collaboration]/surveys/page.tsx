@@ -1,9 +1,11 @@
 import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
+import { SharingSection } from '@/components/sharing/sharing-section';
 import { SurveyListPanel } from '@/components/surveys/survey-list';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { may } from '@/lib/access/permissions';
+import { listShares } from '@/lib/services/sharing/shares';
 import { listSurveys } from '@/lib/services/surveys';
 
 export const metadata: Metadata = { title: 'Surveys' };
@@ -14,7 +16,7 @@ export default async function SurveysPage({
   params: Promise<{ collaboration: string }>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const list = await listSurveys(actor);
+  const [list, shares] = await Promise.all([listSurveys(actor), listShares(actor)]);
   const canAdd = may(actor, 'create-survey');
   return (
     <>
@@ -49,6 +51,7 @@ export default async function SurveysPage({
       <div className="mt-2">
         <SurveyListPanel collaboration={actor.collaboration} initial={list} canAdd={canAdd} />
       </div>
+      <SharingSection collaboration={actor.collaboration} initial={shares} />
     </>
   );
 }

@@ -5,6 +5,7 @@ import { SurveyScreen } from '@/components/surveys/survey-screen';
 import { NotFound } from '@/lib/errors';
 import { nameCooling } from '@/lib/services/cooling-tables';
 import { currentYardstick } from '@/lib/services/survey-depth';
+import { listShares } from '@/lib/services/sharing/shares';
 import { getSurvey } from '@/lib/services/surveys';
 import { listCompanions, listTargets } from '@/lib/services/targets';
 import { listUploads } from '@/lib/services/uploads';
@@ -21,23 +22,28 @@ export default async function SurveyPage({
   const { collaboration, survey: slug } = await params;
   const actor = await currentActor(collaboration);
   try {
-    const [survey, targets, companions, uploads, yardstick] = await Promise.all([
+    const [survey, targets, companions, uploads, yardstick, shares] = await Promise.all([
       getSurvey(actor, slug),
       listTargets(actor, slug, FIRST_PAGE),
       listCompanions(actor, slug),
       listUploads(actor, slug, { limit: 50, offset: 0 }),
       currentYardstick(actor.collaborationId),
     ]);
+      listShares(actor),
     return (
-      <SurveyScreen
-        collaboration={actor.collaboration}
-        survey={survey}
-        targets={targets}
-        companions={companions}
-        uploads={uploads}
-        coolingName={await nameCooling(actor, survey)}
-        population={yardstick.isShared ? yardstick.population : null}
-      />
+      <>
+        <SurveyScreen
+          collaboration={actor.collaboration}
+          survey={survey}
+          targets={targets}
+          companions={companions}
+          uploads={uploads}
+          shares={shares}
+          coolingName={await nameCooling(actor, survey)}
+          population={yardstick.isShared ? yardstick.population : null}
+        />
+        <NotesOf actor={actor} on={{ kind: 'survey', key: slug }} />
+      </>
     );
   } catch (error) {
     if (error instanceof NotFound) notFound();

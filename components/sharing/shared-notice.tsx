@@ -1,0 +1,77 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { refreshShare } from '@/components/hooks/use-sharing';
+import { Notice } from '@/components/ui/notice';
+import { TextAction } from '@/components/ui/text-action';
+import type { SharedFrom } from '@/lib/schemas/sharing';
+import { dayOf, scopeWords } from './share-words';
+
+/** Whose survey this is, how results name it, and whether it may still be used. */
+export function SharedNotice({
+  collaboration,
+  name,
+  shared,
+  onRefreshed,
+}: {
+  collaboration: string;
+  name: string;
+  shared: SharedFrom;
+  onRefreshed(): void;
+}) {
+  const [isBusy, setBusy] = useState(false);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const { owner, scope, attribution, copiedAt, version, withdrawnFrom, withdrawnWhy } = shared;
+  const refresh = async () => {
+    setBusy(true);
+    setRefusal(null);
+    try {
+      await refreshShare(collaboration, shared.shareId);
+      onRefreshed();
+    } catch (failure) {
+      setRefusal(sentenceOf(failure));
+    } finally {
+      setBusy(false);
+    }
+  };
+  return (
+    <div className="my-3 grid gap-2">
+      <Notice tone="neutral" title={`Shared by ${owner}, read only.`}>
+        Copy of {scopeWords[scope]} of {dayOf(copiedAt)}, version {version.slice(0, 8)}. Results
+        that use it say: “{attribution}”
+        {scope === 'maps' &&
+          '. Its curves, files and ages stay with the owner, so adopted ages do not reach these maps.'}
+      </Notice>
+      {withdrawnFrom !== null && (
+        <Notice
+          tone={shared.isWithdrawn ? 'bad' : 'warn'}
+          title={
+            shared.isWithdrawn
+              ? `Withdrawn on ${dayOf(withdrawnFrom)}.`
+              : `${owner} takes ${name} back on ${dayOf(withdrawnFrom)}.`
+          }
+        >
+          Reason: {withdrawnWhy}. Runs that were made stand; nothing new may use it
+          {shared.isWithdrawn ? '' : ' from that day'}.
+        </Notice>
+      )}
+      {shared.hasNewer === true && (
+        <Notice
+          tone="warn"
+          title={`${owner} has changed ${name} since.`}
+          actions={
+            shared.canRefresh && (
+              <TextAction onClick={() => void (isBusy || refresh())}>
+                {isBusy ? 'Refreshing' : 'Refresh the copy'}
+              </TextAction>
+            )
+          }
+        >
+          Earlier runs keep the version that they used.
+        </Notice>
+      )}
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+    </div>
+  );
+}
