@@ -165,6 +165,7 @@ export async function getOverview(actor: Actor): Promise<Overview> {
   const [history, candidates, sharing] = await Promise.all([
     lead ? readHistory(lead.id) : [],
     undecidedCandidates(actor, lead),
+    sharingNotices(actor),
   ]);
   return {
     name: row.name,
@@ -178,8 +179,8 @@ export async function getOverview(actor: Actor): Promise<Overview> {
       ...failedJobs(slug, surveys.surveys, analyses),
       ...failedMaps(slug, surveys.surveys),
       ...candidates,
-    ],
       ...sharing,
+    ],
     jobs,
     log: log.map(({ at, who, what }) => ({ at: at.toISOString(), who, what })),
     can: {

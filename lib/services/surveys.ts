@@ -204,7 +204,7 @@ export async function listSurveys(actor: Actor): Promise<SurveyList> {
 export async function getSurvey(actor: Actor, slug: string): Promise<SurveyView> {
   const row = await findSurvey(actor, slug);
   const counts = await countTargets(actor.collaborationId);
-  return describeSurvey(actor, row, counts.get(row.id));
+  return describeSurvey(actor, row, counts.get(row.id), { forNewer: true });
 }
 
 /** Only members lead surveys. */

@@ -116,7 +116,11 @@ async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise
     findSharing(survey.collaborationId, survey.id),
     currentYardstick(survey.collaborationId),
     ContrastCurveRow.findAll({
-      where: { targetId: targets.map((target) => target.id), replacedAt: null },
+      // What its owner has taken back is shown no more; the maps of earlier runs stay with them.
+      where: {
+        targetId: isTakenBack(survey) ? [] : targets.map((target) => target.id),
+        replacedAt: null,
+      },
       order: [
         ['epoch', 'ASC'],
         ['band', 'ASC'],
@@ -187,11 +191,11 @@ export async function markTarget(
 ): Promise<TargetView> {
   const { target, survey } = await findTarget(actor, id);
   demand(actor, 'change-survey', { isLead: isLead(actor, survey) });
+  await refuseShared(survey);
   await inTransaction(async (transaction) => {
     const attributes = { ...target.attributes, selectedForCompanion: mark };
     await target.update(
       {
-  await refuseShared(survey);
         ...(reason !== undefined && { leftOutReason: reason }),
         ...(mark !== undefined && { attributes }),
       },

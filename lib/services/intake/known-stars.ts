@@ -72,7 +72,11 @@ export class KnownStars {
     return star && this.rootOf(star);
   }
 
-  find({ gaiaDr3Id, name, otherNames }: TargetRecord): FoundStar | undefined {
+  find({
+    gaiaDr3Id,
+    name,
+    otherNames,
+  }: Pick<TargetRecord, 'gaiaDr3Id' | 'name' | 'otherNames'>): FoundStar | undefined {
     const answer = (star: StarRow, evidence: MatchEvidence): FoundStar => {
       const root = this.rootOf(star);
       return { star: root, evidence, through: root === star ? null : star };

@@ -1,11 +1,12 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
+import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
 import { currentActor } from '@/app/session';
 import { SurveyScreen } from '@/components/surveys/survey-screen';
 import { NotFound } from '@/lib/errors';
 import { nameCooling } from '@/lib/services/cooling-tables';
-import { currentYardstick } from '@/lib/services/survey-depth';
 import { listShares } from '@/lib/services/sharing/shares';
+import { currentYardstick } from '@/lib/services/survey-depth';
 import { getSurvey } from '@/lib/services/surveys';
 import { listCompanions, listTargets } from '@/lib/services/targets';
 import { listUploads } from '@/lib/services/uploads';
@@ -28,8 +29,8 @@ export default async function SurveyPage({
       listCompanions(actor, slug),
       listUploads(actor, slug, { limit: 50, offset: 0 }),
       currentYardstick(actor.collaborationId),
-    ]);
       listShares(actor),
+    ]);
     return (
       <>
         <SurveyScreen
