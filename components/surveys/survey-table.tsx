@@ -38,18 +38,24 @@ function SurveyRow({
   most: number;
 }) {
   return (
-    <span className="inline-flex items-center gap-2 whitespace-nowrap">
-      <span
-        aria-hidden="true"
-        className="size-2.5 shrink-0"
-        style={{ background: seriesColour(survey.position) }}
-      />
-      <Link href={`/${collaboration}/surveys/${survey.slug}`} className="text-ink">
-        {survey.name}
-      </Link>
-      {survey.shared ? (
-        <span className="font-normal text-ink3">
-          {survey.shared.isWithdrawn ? 'withdrawn by' : 'by'} {survey.shared.owner}
+    <Row>
+      <Cell isRowHead>
+        <span className="inline-flex items-center gap-2 whitespace-nowrap">
+          <span
+            aria-hidden="true"
+            className="size-2.5 shrink-0"
+            style={{ background: seriesColour(survey.position) }}
+          />
+          <Link href={`/${collaboration}/surveys/${survey.slug}`} className="text-ink">
+            {survey.name}
+          </Link>
+          {survey.shared ? (
+            <span className="font-normal text-ink3">
+              {survey.shared.isWithdrawn ? 'withdrawn by' : 'by'} {survey.shared.owner}
+            </span>
+          ) : (
+            survey.isArchived && <span className="font-normal text-ink3">archived</span>
+          )}
         </span>
       </Cell>
       <Cell className={wide}>{survey.band}</Cell>
@@ -77,106 +83,6 @@ function SurveyRow({
       <Cell className={wide}>
         {survey.depth && (
           <Sparkline
-  return [
-    {
-      id: 'survey',
-      head: 'survey',
-      name: 'survey',
-      isRowHead: true,
-      value: ({ name }) => name,
-      cell: (survey) => <SurveyName collaboration={collaboration} survey={survey} />,
-      total: 'Every star once',
-    },
-    { id: 'band', head: 'band', name: 'band', className: wide, value: ({ band }) => band },
-    {
-      id: 'observed',
-      head: 'observed',
-      name: 'first year',
-      className: `whitespace-nowrap ${wide}`,
-      value: ({ observedFrom, observedTo }) => observedFrom ?? observedTo,
-      cell: observedYears,
-      also: [{ name: 'last year', value: ({ observedTo }) => observedTo }],
-    },
-    {
-      id: 'lead',
-      head: 'lead',
-      name: 'lead',
-      className: `whitespace-nowrap ${wide}`,
-      value: ({ lead }) => lead?.name ?? null,
-    },
-    {
-      id: 'targets',
-      head: 'targets',
-      name: 'targets',
-      isNumeric: true,
-      value: ({ targets }) => targets,
-      total: list.stars,
-    },
-    {
-      id: 'also',
-      head: 'also in another',
-      name: 'also in another survey',
-      isNumeric: true,
-      className: wide,
-      value: ({ alsoInAnother }) => alsoInAnother,
-      total: shared,
-    },
-    {
-      id: 'maps',
-      head: (
-        <>
-          maps<span className={wide}> ready</span>
-        </>
-      ),
-      name: 'maps ready',
-      className: 'whitespace-nowrap',
-      value: ({ maps }) => maps.ready,
-      cell: (survey) => <MapsState survey={survey} />,
-      total: `${ready} of ${list.entries}`,
-    },
-    {
-      id: 'sum',
-      head: (
-        <>
-          sum<span className={wide}> of detection probabilities</span>
-        </>
-      ),
-      name: 'sum of detection probabilities',
-      isNumeric: true,
-      value: ({ summedCompleteness }) => summedCompleteness,
-      cell: (survey) => <SummedBar survey={survey} most={most} />,
-    },
-    {
-      id: 'depth',
-      head: '1–1000 AU',
-      name: 'depth of search',
-      isUnsorted: true,
-      isUnwritten: true,
-      className: wide,
-      value: () => null,
-      cell: ({ name, depth }) =>
-        depth && (
-          <Sparkline
-            xs={Float64Array.from(depth.semiMajorAxisAu)}
-            ys={Float64Array.from(depth.stars)}
-            isLogX
-            label={`Depth of search of ${name} from ${depth.semiMajorAxisAu[0]} to ${depth.semiMajorAxisAu.at(-1)} AU`}
-          />
-        ),
-    },
-  ];
-}
-
-interface SurveyTableProps {
-  collaboration: string;
-  list: SurveyList;
-  /** The page is about the surveys: its address holds the order, and there is a file. */
-  isWholePage?: boolean;
-}
-
-/** Surveys with their sensitivity, and the total in which every star counts once. */
-export function SurveyTable({ collaboration, list, isWholePage = false }: SurveyTableProps) {
-  const columns = useMemo(() => columnsOf(collaboration, list), [collaboration, list]);
             xs={Float64Array.from(survey.depth.semiMajorAxisAu)}
             ys={Float64Array.from(survey.depth.stars)}
             isLogX
@@ -202,15 +108,50 @@ export function SurveyTable({ collaboration, list }: SurveyTableProps) {
     0,
   );
   return (
-    <DataTable
-      caption="Surveys of the collaboration"
-      rows={list.surveys}
-      columns={columns}
-      rowId={({ id }) => id}
-      noun={{ one: 'survey', many: 'surveys' }}
-      fileName={isWholePage ? `${collaboration}-surveys` : undefined}
-      isInAddress={isWholePage}
-      hasTotal
-    />
+    <Table caption="Surveys of the collaboration">
+      <TableHead>
+        <Row>
+          <HeadCell>survey</HeadCell>
+          <HeadCell className={wide}>band</HeadCell>
+          <HeadCell className={wide}>observed</HeadCell>
+          <HeadCell className={wide}>lead</HeadCell>
+          <HeadCell isNumeric>targets</HeadCell>
+          <HeadCell isNumeric className={wide}>
+            also in another
+          </HeadCell>
+          <HeadCell>maps ready</HeadCell>
+          <HeadCell colSpan={2} className={wide}>
+            sum of detection probabilities
+          </HeadCell>
+          <HeadCell isNumeric className="md:hidden">
+            sum
+          </HeadCell>
+          <HeadCell className={wide}>1–1000 AU</HeadCell>
+        </Row>
+      </TableHead>
+      <TableBody>
+        {list.surveys.map((survey) => (
+          <SurveyRow key={survey.id} collaboration={collaboration} survey={survey} most={most} />
+        ))}
+        <Row isTotal>
+          <Cell isRowHead className="whitespace-nowrap">
+            Every star once
+          </Cell>
+          <Cell className={wide} />
+          <Cell className={wide} />
+          <Cell className={wide} />
+          <Cell isNumeric>{list.stars}</Cell>
+          <Cell isNumeric className={wide}>
+            {shared}
+          </Cell>
+          <Cell className="whitespace-nowrap">
+            {ready} of {list.entries}
+          </Cell>
+          <Cell className={wide} />
+          <Cell />
+          <Cell className={wide} />
+        </Row>
+      </TableBody>
+    </Table>
   );
 }

@@ -359,6 +359,7 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...searchRoutes,
   ...analyses,
   ...candidateRoutes,
+  ...sharingRoutes,
   ...starRoutes,
   ...talkRoutes,
 ];
