@@ -48,6 +48,7 @@ function CollaborationMenu({ me, current }: Pick<LabBarProps, 'me' | 'current'>)
       ))}
       <MenuRule />
       <MenuLink href={`/${current}/people`}>People and invitations</MenuLink>
+      <MenuLink href={`/${current}/settings`}>Settings</MenuLink>
       <MenuLink href="/welcome">Start another collaboration</MenuLink>
     </Menu>
   );
@@ -73,6 +74,7 @@ function OwnMenu({ me, current, theme }: Omit<LabBarProps, 'actions'>) {
         }))}
       />
       <MenuRule />
+      <MenuLink href={`/${current}/me`}>Profile, sessions and mail</MenuLink>
       <MenuLink href={`/${current}/me/tokens`}>API tokens</MenuLink>
       <MenuAction onSelect={() => void endSession()}>Sign out</MenuAction>
     </Menu>
@@ -147,6 +149,10 @@ export function LabFoot({ collaboration }: { collaboration: string }) {
   return (
     <footer className="mx-auto mt-14 max-w-[1440px] px-[22px] pb-8 text-[13px] text-ink3 lg:px-10 print:hidden">
       <Link href={`/${collaboration}/people`}>People</Link>
+      <span className="mx-2">·</span>
+      <Link href={`/${collaboration}/activity`}>Activity</Link>
+      <span className="mx-2">·</span>
+      <Link href={`/${collaboration}/settings`}>Settings</Link>
       <span className="mx-2">·</span>
       <a href="/api/v1/openapi.json">API</a>
     </footer>

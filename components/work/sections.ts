@@ -25,7 +25,10 @@ export const moreSections: Section[] = [
   { label: 'Maps', path: 'maps', also: 'completeness store' },
   { label: 'Cooling relations', path: 'cooling', also: 'tracks tables start' },
   { label: 'Compare', path: 'compare', also: 'two analyses side by side' },
+  { label: 'Activity', path: 'activity', also: 'news notes mentions what happened' },
   { label: 'People', path: 'people', also: 'members roles invitations' },
+  { label: 'Settings', path: 'settings', also: 'name address rule level time zone archive' },
+  { label: 'Log', path: 'log', also: 'audit who did what export' },
 ];
 
 export const sectionHref = (collaboration: string, { path }: Section) =>

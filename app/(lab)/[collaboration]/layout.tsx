@@ -6,8 +6,10 @@ import { LabBar, LabFoot } from '@/components/people/lab-bar';
 import type { BeginAction } from '@/components/search/entries';
 import { SkipLink } from '@/components/ui/skip-link';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
+import { TimeZoneProvider } from '@/components/ui/time-zone';
 import { type Action, may } from '@/lib/access/permissions';
 import { getMe } from '@/lib/services/people';
+import { timeZoneOf } from '@/lib/services/settings';
 
 /** What can be begun from the search, each with the permission that its page asks for. */
 const beginnings: (BeginAction & { needs: Action })[] = [
@@ -37,7 +39,7 @@ export default async function LabLayout({
   ]);
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
-    <>
+    <TimeZoneProvider zone={await timeZoneOf(actor)}>
       <SkipLink />
       <LabBar
         me={await getMe(person)}
@@ -59,6 +61,6 @@ export default async function LabLayout({
         </FigureFrame>
       </main>
       <LabFoot collaboration={actor.collaboration} />
-    </>
+    </TimeZoneProvider>
   );
 }

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
+import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { ResultScreen } from '@/components/runs/result-screen';
@@ -27,14 +28,17 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
   const used = run?.inputs?.population.id;
   const populations = used ? await findPopulationsById(actor, [used]) : undefined;
   return (
-    <ResultScreen
-      key={analysis.key}
-      collaboration={actor.collaboration}
-      analysis={analysis}
-      run={run}
-      runPopulation={(used && populations?.get(used)) || null}
-      query={await searchParams}
-    />
+    <>
+      <ResultScreen
+        key={analysis.key}
+        collaboration={actor.collaboration}
+        analysis={analysis}
+        run={run}
+        runPopulation={(used && populations?.get(used)) || null}
+        query={await searchParams}
+      />
+      <NotesOf actor={actor} on={{ kind: 'analysis', key: analysis.key }} />
+    </>
   );
 }
 

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
+import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
 import { currentActor } from '@/app/session';
 import { StarScreen } from '@/components/stars/star-screen';
 import { NotFound } from '@/lib/errors';
@@ -15,7 +16,12 @@ export default async function StarPage({
   const { collaboration, star } = await params;
   const actor = await currentActor(collaboration);
   try {
-    return <StarScreen collaboration={actor.collaboration} initial={await getStar(actor, star)} />;
+    return (
+      <>
+        <StarScreen collaboration={actor.collaboration} initial={await getStar(actor, star)} />
+        <NotesOf actor={actor} on={{ kind: 'star', key: star }} />
+      </>
+    );
   } catch (error) {
     if (error instanceof NotFound) notFound();
     throw error;

@@ -1,0 +1,61 @@
+'use client';
+
+import useSWR from 'swr';
+import { z } from 'zod';
+import { type NoteItem, type NoteList, noteListSchema } from '@/lib/schemas/notes';
+import { memberSchema } from '@/lib/schemas/people';
+import { apiPath, withQuery } from './api-path';
+import { request, requestNothing } from './request';
+
+const membersSchema = z.object({ members: z.array(memberSchema) });
+
+export function useNotes(collaboration: string, on: NoteItem, fallback: NoteList) {
+  return useSWR(
+    withQuery(apiPath(collaboration, 'notes'), { ...on }),
+    (path) => request(path, noteListSchema),
+    // What is new stays marked while the page is open: asked again only after a change.
+    { fallbackData: fallback, revalidateOnMount: false, revalidateOnFocus: false },
+  );
+}
+
+/** Who can be named in a note; asked for when somebody begins to write. */
+export function useNameable(collaboration: string, isWanted: boolean) {
+  const { data } = useSWR(
+    isWanted ? apiPath(collaboration, 'members') : null,
+    async (path: string) =>
+      (await request(path, membersSchema)).members.map(({ person }) => person),
+    { revalidateOnFocus: false },
+  );
+  return data ?? [];
+}
+
+export interface NoteText {
+  body: string;
+  mentions: string[];
+}
+
+export function writeNote(collaboration: string, on: NoteItem, text: NoteText, replyTo?: string) {
+  return request(apiPath(collaboration, 'notes'), noteListSchema, {
+    method: 'POST',
+    body: { on, ...text, replyTo },
+  });
+}
+
+export function changeNote(
+  collaboration: string,
+  id: string,
+  change: NoteText | { isResolved: boolean },
+) {
+  return request(apiPath(collaboration, 'notes', id), noteListSchema, {
+    method: 'PATCH',
+    body: change,
+  });
+}
+
+export function removeNote(collaboration: string, id: string) {
+  return request(apiPath(collaboration, 'notes', id), noteListSchema, { method: 'DELETE' });
+}
+
+export function seeNotes(collaboration: string, on: NoteItem) {
+  return requestNothing(apiPath(collaboration, 'notes', 'seen'), { method: 'POST', body: on });
+}

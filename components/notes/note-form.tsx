@@ -1,0 +1,92 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { type NoteText, useNameable } from '@/components/hooks/use-notes';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+import { MentionField } from './mention-field';
+import { mentionedIn, type Nameable } from './mentions';
+
+interface NoteFormProps {
+  collaboration: string;
+  label: string;
+  verb: string;
+  initial?: { body: string; mentions: readonly Nameable[] };
+  isFocused?: boolean;
+  onSend(text: NoteText): Promise<void>;
+  onCancel?(): void;
+}
+
+/** Words, and who is named in them. */
+export function NoteForm(props: NoteFormProps) {
+  const { collaboration, label, verb, initial, isFocused, onSend, onCancel } = props;
+  const [body, setBody] = useState(initial?.body ?? '');
+  const [picked, setPicked] = useState<ReadonlySet<string>>(
+    new Set(initial?.mentions.map(({ id }) => id)),
+  );
+  const [isBegun, setBegun] = useState(initial !== undefined);
+  const [isBusy, setBusy] = useState(false);
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const people = useNameable(collaboration, isBegun);
+  const isEmpty = body.trim() === '';
+  const send = async () => {
+    if (isEmpty || isBusy) return;
+    setBusy(true);
+    setRefusal(null);
+    try {
+      await onSend({ body, mentions: mentionedIn(body, people, picked) });
+      setBody('');
+      setPicked(new Set());
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+    setBusy(false);
+  };
+  return (
+    <form
+      className="max-w-[72ch]"
+      onSubmit={(event) => {
+        event.preventDefault();
+        void send();
+      }}
+    >
+      <MentionField
+        label={label}
+        value={body}
+        people={people}
+        rows={initial || isFocused ? 3 : 2}
+        isFocused={isFocused}
+        onChange={setBody}
+        onPick={({ id }) => setPicked(new Set([...picked, id]))}
+        onFocus={() => setBegun(true)}
+        onSend={() => void send()}
+      />
+      {refusal !== null && (
+        <div className="mt-2">
+          <Notice tone="bad" title="Nothing was stored." isAnnounced>
+            {refusal}
+          </Notice>
+        </div>
+      )}
+      {(isBegun || isFocused) && (
+        <div className="mt-2 flex flex-wrap items-center gap-2">
+          <Button
+            type="submit"
+            size="small"
+            isBusy={isBusy}
+            disabledReason={isEmpty ? 'Write something first' : undefined}
+          >
+            {verb}
+          </Button>
+          {onCancel !== undefined && (
+            <Button size="small" variant="quiet" onClick={onCancel}>
+              Cancel
+            </Button>
+          )}
+          <span className="text-ink3 text-note">@ names somebody, who gets a message</span>
+        </div>
+      )}
+    </form>
+  );
+}

@@ -1,0 +1,62 @@
+'use client';
+
+import { type FormEvent, useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { changePassword } from '@/components/hooks/use-me';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+import { PasswordField } from '@/components/ui/password-field';
+
+/** A new password; every other session ends with it. */
+export function PasswordForm({ onChanged }: { onChanged(): void }) {
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const [isSaved, setSaved] = useState(false);
+  const [isBusy, setBusy] = useState(false);
+  const save = async (event: FormEvent<HTMLFormElement>) => {
+    event.preventDefault();
+    const form = event.currentTarget;
+    const given = new FormData(form);
+    setRefusal(null);
+    setSaved(false);
+    setBusy(true);
+    try {
+      await changePassword(String(given.get('current')), String(given.get('next')));
+      form.reset();
+      setSaved(true);
+      onChanged();
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+    setBusy(false);
+  };
+  return (
+    <form className="flex max-w-[440px] flex-col gap-4" onSubmit={(event) => void save(event)}>
+      <PasswordField
+        label="Your password now"
+        name="current"
+        autoComplete="current-password"
+        required
+      />
+      <PasswordField
+        label="New password"
+        name="next"
+        hint="At least 15 characters; a few words that belong together for nobody else"
+        autoComplete="new-password"
+        minLength={15}
+        maxLength={128}
+        required
+      />
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {isSaved && (
+        <Notice tone="ok" title="The new password holds." isAnnounced>
+          Every other session has ended.
+        </Notice>
+      )}
+      <div>
+        <Button type="submit" isBusy={isBusy}>
+          Change the password
+        </Button>
+      </div>
+    </form>
+  );
+}

@@ -1,0 +1,31 @@
+'use client';
+
+import { createContext, type ReactNode, useCallback, useContext } from 'react';
+
+const TimeZone = createContext('UTC');
+
+/** The time zone of all dates below it. */
+export function TimeZoneProvider({ zone, children }: { zone: string; children: ReactNode }) {
+  return <TimeZone.Provider value={zone}>{children}</TimeZone.Provider>;
+}
+
+export const useTimeZone = () => useContext(TimeZone);
+
+export type MomentForm = 'time' | 'day' | 'full' | 'clock';
+
+const forms: Record<MomentForm, Intl.DateTimeFormatOptions> = {
+  time: { day: 'numeric', month: 'short', hour: '2-digit', minute: '2-digit' },
+  day: { day: 'numeric', month: 'short', year: 'numeric' },
+  full: { day: 'numeric', month: 'short', year: 'numeric', hour: '2-digit', minute: '2-digit' },
+  clock: { hour: '2-digit', minute: '2-digit' },
+};
+
+/** Writes moments in the collaboration's time zone. */
+export function useMoment(): (moment: string, form?: MomentForm) => string {
+  const timeZone = useTimeZone();
+  return useCallback(
+    (moment, form = 'time') =>
+      new Date(moment).toLocaleString('en-GB', { ...forms[form], timeZone }),
+    [timeZone],
+  );
+}
