@@ -18,6 +18,8 @@ import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
 import { candidateRoutes } from './candidate-routes';
 import { pageSchema, roleSchema } from './common';
+import { exerciseRoutes } from './exercise-routes';
+import { exportRoutes } from './export-routes';
 import { jobSchema } from './jobs';
 import { surveyMapsSchema } from './map-states';
 import { overviewSchema } from './overview';
@@ -41,14 +43,16 @@ import {
   sharePopulationSchema,
 } from './population-versions';
 import { createPopulationSchema, populationSchema } from './populations';
+import { releaseRoutes } from './release-routes';
 import { runSchema, runSummarySchema } from './runs';
 import { sampleRoutes } from './sample-routes';
 import { searchRoutes } from './search-routes';
 import { mapViewSchema } from './sensitivity';
+import { sharingRoutes } from './sharing-routes';
 import { starRoutes } from './star-routes';
+import { statementRoutes } from './statement-routes';
 import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
 import {
-import { sharingRoutes } from './sharing-routes';
   companionSchema,
   coolingTableSchema,
   createSurveySchema,
@@ -306,15 +310,6 @@ const analyses: ApiRoute[] = [
   route('get', `${team}/runs/{run}/maps`, 'read', 'All maps of a run: uint16, little-endian', {
     files: bytes,
   }),
-  route('get', `${team}/runs/{run}/exports/{file}`, 'read', 'A run as CSV, JSON, LaTeX or figure', {
-    files: [
-      'text/csv',
-      'application/json',
-      'application/x-tex',
-      'image/svg+xml',
-      'application/pdf',
-    ],
-  }),
   route('post', `${team}/figures`, 'read', 'A figure of the product, sent as SVG, as PDF', {
     isUpload: true,
     uploadType: 'image/svg+xml',
@@ -355,11 +350,15 @@ export const apiRoutes: readonly ApiRoute[] = [
   itself,
   ...people,
   ...surveys,
+  ...releaseRoutes,
   ...sampleRoutes,
   ...searchRoutes,
   ...analyses,
+  ...exportRoutes,
   ...candidateRoutes,
   ...sharingRoutes,
   ...starRoutes,
+  ...exerciseRoutes,
+  ...statementRoutes,
   ...talkRoutes,
 ];

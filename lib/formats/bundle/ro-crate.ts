@@ -33,8 +33,8 @@ export interface CrateFacts {
   description: string;
   /** ISO 8601. */
   datePublished: string;
-  /** Address of the licence. */
-  licence: string;
+  /** Address of the licence, or a place in this file, and its name. */
+  licence: { id: string; name: string };
   /** Address of the release, where it has one. */
   url?: string;
   authors: CrateAuthor[];
@@ -99,13 +99,13 @@ export function writeCrate(facts: CrateFacts): string {
       name: facts.name,
       description: facts.description,
       datePublished: facts.datePublished,
-      license: ref(facts.licence),
+      license: ref(facts.licence.id),
       ...(facts.url !== undefined && { url: facts.url }),
       author: facts.authors.map(idOfAuthor).map(ref),
       hasPart: files.map(({ name }) => ref(encodeURI(name))),
       mentions: facts.runs.map(({ id }) => ref(`#run-${id}`)),
     },
-    { '@id': facts.licence, '@type': 'CreativeWork', name: facts.licence },
+    { '@id': facts.licence.id, '@type': 'CreativeWork', name: facts.licence.name },
     ...authorEntities(facts.authors),
     {
       '@id': '#software',

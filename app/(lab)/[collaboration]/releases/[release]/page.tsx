@@ -1,0 +1,30 @@
+import type { Metadata } from 'next';
+import { currentActor } from '@/app/session';
+import { ReleaseScreen } from '@/components/releases/release-screen';
+import { listGuestLinks } from '@/lib/services/releases/guest-links';
+import { addressOfRelease } from '@/lib/services/releases/sign';
+import { foundRelease } from '../found-release';
+
+interface PageProps {
+  params: Promise<{ collaboration: string; release: string }>;
+}
+
+export async function generateMetadata({ params }: PageProps): Promise<Metadata> {
+  return { title: (await params).release };
+}
+
+export default async function ReleasePage({ params }: PageProps) {
+  const { collaboration, release: key } = await params;
+  const actor = await currentActor(collaboration);
+  const release = await foundRelease(actor, key);
+  const { links } = await listGuestLinks(actor);
+  return (
+    <ReleaseScreen
+      key={release.id}
+      collaboration={actor.collaboration}
+      initial={release}
+      links={links}
+      address={addressOfRelease(release.code)}
+    />
+  );
+}

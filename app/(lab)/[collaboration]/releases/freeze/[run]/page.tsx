@@ -1,0 +1,43 @@
+import type { Metadata } from 'next';
+import { notFound } from 'next/navigation';
+import { currentActor } from '@/app/session';
+import { FreezeScreen } from '@/components/releases/freeze-screen';
+import type { Actor } from '@/lib/access/actor';
+import { may } from '@/lib/access/permissions';
+import { NotFound } from '@/lib/errors';
+import { getFreezeStanding } from '@/lib/services/releases/freeze';
+import { listGuestLinks } from '@/lib/services/releases/guest-links';
+import { getRun } from '@/lib/services/runs';
+
+export const metadata: Metadata = { title: 'Freeze' };
+
+async function findStanding(actor: Actor, run: string) {
+  try {
+    return { standing: await getFreezeStanding(actor, run), view: await getRun(actor, run) };
+  } catch (reason) {
+    if (reason instanceof NotFound) notFound();
+    throw reason;
+  }
+}
+
+export default async function FreezePage({
+  params,
+}: {
+  params: Promise<{ collaboration: string; run: string }>;
+}) {
+  const { collaboration, run } = await params;
+  const actor = await currentActor(collaboration);
+  const { standing, view } = await findStanding(actor, run);
+  if (!view.result) notFound();
+  const { links } = await listGuestLinks(actor);
+  return (
+    <FreezeScreen
+      collaboration={actor.collaboration}
+      initial={standing}
+      sentence={view.result.statement.sentence}
+      conditions={view.result.statement.conditions}
+      canRelease={may(actor, 'freeze-run')}
+      links={links}
+    />
+  );
+}

@@ -1,0 +1,17 @@
+import { collaborationRoute } from '@/app/api/v1/handler';
+import { updateReleaseSchema } from '@/lib/schemas/releases';
+import { getRelease } from '@/lib/services/releases/describe';
+import { removeRelease, updateRelease } from '@/lib/services/releases/draft';
+
+export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
+  getRelease(actor, params.release),
+);
+
+export const PATCH = collaborationRoute(
+  { scope: 'write', body: updateReleaseSchema },
+  ({ actor, params, body }) => updateRelease(actor, params.release, body),
+);
+
+export const DELETE = collaborationRoute({ scope: 'write' }, ({ actor, params }) =>
+  removeRelease(actor, params.release),
+);

@@ -1,0 +1,182 @@
+'use client';
+
+import { useState } from 'react';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { bundleAddress, freezeRun } from '@/components/hooks/use-releases';
+import { Button } from '@/components/ui/button';
+import { Icon } from '@/components/ui/icon';
+import { LinkButton } from '@/components/ui/link-button';
+import { Notice } from '@/components/ui/notice';
+import { PageTitle } from '@/components/ui/page-title';
+import { SectionOpener } from '@/components/ui/section-opener';
+import { StateMark } from '@/components/ui/state-mark';
+import { TextAreaField } from '@/components/ui/text-area-field';
+import type { FreezeStanding, GuestLinkView } from '@/lib/schemas/releases';
+import { GiveLink } from './give-link';
+import { GuestLinks } from './guest-links';
+import { longDay, shortDigest } from './release-words';
+
+interface FreezeScreenProps {
+  collaboration: string;
+  initial: FreezeStanding;
+  sentence: string;
+  conditions: string[];
+  canRelease: boolean;
+  links: GuestLinkView[];
+}
+
+/** What freezing means, its checks, the reason where one is asked for, and what may follow. */
+export function FreezeScreen(props: FreezeScreenProps) {
+  const { collaboration, initial, sentence, conditions, canRelease, links } = props;
+  const [standing, setStanding] = useState(initial);
+  const [reason, setReason] = useState('');
+  const [isBusy, setBusy] = useState(false);
+  const [problem, setProblem] = useState<string>();
+  const { run, checks, frozen } = standing;
+  const name = `${run.analysisKey}, run ${run.number}`;
+  const isStopped = checks.some(({ isMet, stops }) => stops && !isMet);
+  const needsReason = checks.some(({ isMet }) => !isMet);
+  const freeze = async () => {
+    setBusy(true);
+    setProblem(undefined);
+    try {
+      setStanding(await freezeRun(collaboration, run.id, reason.trim()));
+    } catch (failure) {
+      setProblem(sentenceOf(failure));
+    } finally {
+      setBusy(false);
+    }
+  };
+  return (
+    <>
+      <PageTitle
+        title={frozen ? `${name} is frozen` : `Freeze ${name}`}
+        crumbs={[
+          { href: `/${collaboration}/analyses`, label: 'Analyses' },
+          { href: `/${collaboration}/analyses/${run.analysisKey}`, label: run.analysisKey },
+          { label: frozen ? 'Frozen' : 'Freeze' },
+        ]}
+        state={frozen && <StateMark kind="frozen">frozen</StateMark>}
+        context={`${sentence}.`}
+        actions={
+          <LinkButton href={bundleAddress(collaboration, run.id)} icon="download" isDownload>
+            Bundle of this run
+          </LinkButton>
+        }
+      />
+      <div className="grid gap-x-12 gap-y-8 pb-10 lg:grid-cols-2">
+        <section className="min-w-0">
+          <SectionOpener title="Checks" />
+          <ul className="text-note">
+            {checks.map((check) => (
+              <li key={check.name} className="flex gap-2.5 border-rule border-b py-2.5">
+                <span className={check.isMet ? 'text-ok' : check.stops ? 'text-bad' : 'text-warn'}>
+                  <Icon name={check.isMet ? 'ok' : check.stops ? 'bad' : 'warn'} size={16} />
+                </span>
+                <span>
+                  {check.words}
+                  {!check.isMet && !check.stops && !frozen && (
+                    <span className="block text-ink3">A reason is asked for.</span>
+                  )}
+                </span>
+              </li>
+            ))}
+          </ul>
+          <div className="mt-5">
+            {frozen ? (
+              <>
+                <p className="text-ink2">
+                  Frozen by {frozen.by} on {longDay(frozen.at)}, with its inputs (fingerprint{' '}
+                  <span title={frozen.sha256}>{shortDigest(frozen.sha256)}</span>). It cannot
+                  change.
+                </p>
+                {frozen.reason !== null && (
+                  <p className="mt-2 text-ink2">Reason given: {frozen.reason}</p>
+                )}
+                <div className="mt-4 flex flex-wrap gap-2">
+                  {canRelease && (
+                    <LinkButton
+                      href={`/${collaboration}/releases/new?run=${run.id}`}
+                      variant="primary"
+                    >
+                      Release it
+                    </LinkButton>
+                  )}
+                  {standing.canLink && (
+                    <GiveLink
+                      collaboration={collaboration}
+                      opens={name}
+                      target={{ runId: run.id }}
+                    />
+                  )}
+                </div>
+              </>
+            ) : standing.canFreeze ? (
+              <div className="grid gap-3">
+                {needsReason && !isStopped && (
+                  <TextAreaField
+                    label="Reason"
+                    hint="stands in the seal of every release of this run"
+                    rows={3}
+                    maxLength={1000}
+                    value={reason}
+                    onChange={(event) => setReason(event.target.value)}
+                  />
+                )}
+                {problem !== undefined && (
+                  <Notice tone="bad" title="It was not frozen." isAnnounced>
+                    {problem}
+                  </Notice>
+                )}
+                <div>
+                  <Button
+                    variant="primary"
+                    icon="lock"
+                    isBusy={isBusy}
+                    onClick={() => void freeze()}
+                    disabledReason={
+                      isStopped
+                        ? 'The inputs have changed: run the analysis again first.'
+                        : needsReason && reason.trim() === ''
+                          ? 'Say why, although a check is not met.'
+                          : undefined
+                    }
+                  >
+                    Freeze {name}
+                  </Button>
+                </div>
+              </div>
+            ) : (
+              <Notice tone="neutral" icon="lock" title="An author or an owner freezes runs.">
+                Ask one of them to freeze {name}.
+              </Notice>
+            )}
+          </div>
+        </section>
+        <section className="min-w-0">
+          <SectionOpener title="What freezing keeps" />
+          <p className="max-w-[60ch] text-ink2">
+            Targets, curves, companions, cooling relations, population and settings are kept with
+            the run as they are now. Later changes of the surveys cannot reach it, and it can be
+            made again from what was kept.
+          </p>
+          <ul className="mt-3 max-w-[72ch] list-disc pl-5 text-ink3 text-note">
+            {conditions.map((condition) => (
+              <li key={condition}>{condition}</li>
+            ))}
+          </ul>
+          {frozen && (
+            <div className="mt-8">
+              <GuestLinks
+                collaboration={collaboration}
+                initial={links}
+                canEnd={standing.canLink}
+                opens={name}
+              />
+            </div>
+          )}
+        </section>
+      </div>
+    </>
+  );
+}
