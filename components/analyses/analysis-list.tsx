@@ -10,13 +10,16 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import { AnalysisTable } from './analysis-table';
 
+/** More curves on one axis could not be told apart. */
+const MOST_COMPARED = 6;
+
 interface AnalysisListProps {
   collaboration: string;
   initial: AnalysisView[];
   canCreate: boolean;
 }
 
-/** All analyses as intervals on one axis; two of them can be put side by side. */
+/** All analyses as intervals on one axis; some of them can be put side by side. */
 export function AnalysisList({ collaboration, initial, canCreate }: AnalysisListProps) {
   const { data: analyses = initial } = useAnalyses(collaboration, initial);
   const [picked, setPicked] = useState<string[]>([]);
@@ -43,16 +46,20 @@ export function AnalysisList({ collaboration, initial, canCreate }: AnalysisList
             title="Upper limits"
             context="bar: the limit at its level; box: central 68 %"
             tools={
-              picked.length === 2 ? (
+              picked.length >= 2 && picked.length <= MOST_COMPARED ? (
                 <Link
                   href={`/${collaboration}/compare?with=${picked.join()}`}
                   className="font-semibold"
                 >
-                  Compare {picked.join(' and ')}
+                  Compare {picked.join(', ')}
                 </Link>
               ) : (
                 <span className="text-ink3">
-                  {picked.length === 1 ? 'Tick one more to compare' : 'Tick two to compare'}
+                  {picked.length > MOST_COMPARED
+                    ? `At most ${MOST_COMPARED} can be compared`
+                    : picked.length === 1
+                      ? 'Tick one more to compare'
+                      : 'Tick two to compare'}
                 </span>
               )
             }
@@ -61,13 +68,7 @@ export function AnalysisList({ collaboration, initial, canCreate }: AnalysisList
             collaboration={collaboration}
             analyses={analyses}
             picked={picked}
-            onPick={(key) =>
-              setPicked(
-                picked.includes(key)
-                  ? picked.filter((one) => one !== key)
-                  : [...picked.slice(-1), key],
-              )
-            }
+            onPick={setPicked}
           />
         </section>
       )}

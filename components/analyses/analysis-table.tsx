@@ -1,11 +1,13 @@
 'use client';
 
 import Link from 'next/link';
+import { useMemo } from 'react';
 import { IntervalAxis, IntervalMark, intervalMax } from '@/components/charts/intervals-on-axis';
 import { formatDuration } from '@/components/runs/time-words';
+import type { DataColumn, Facet } from '@/components/ui/data-table/column';
+import { DataTable } from '@/components/ui/data-table/data-table';
 import { JupiterMass } from '@/components/ui/notation';
-import { StateMark } from '@/components/ui/state-mark';
-import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { type StateKind, StateMark } from '@/components/ui/state-mark';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatRange } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
@@ -16,108 +18,179 @@ export function newestFinished(analysis: AnalysisView): RunSummary | undefined {
   return analysis.runs.find((run) => run.job.status === 'done' && run.limit !== null);
 }
 
-/** Analyses with their intervals on one axis; with `onPick` two can be ticked for comparison. */
+function columnsOf(collaboration: string, max: number): DataColumn<AnalysisView>[] {
+  return [
+    {
+      id: 'key',
+      head: 'key',
+      name: 'key',
+      className: 'whitespace-nowrap text-ink3 max-md:hidden',
+      value: ({ key }) => key,
+    },
+    {
+      id: 'analysis',
+      head: 'analysis',
+      name: 'analysis',
+      isRowHead: true,
+      value: ({ name }) => name,
+      cell: ({ key, name, population }) => (
+        <>
+          <Link
+            href={`/${collaboration}/analyses/${key}`}
+            className="text-ink max-md:inline-block max-md:py-2"
+          >
+            {name}
+          </Link>
+          <span className="block font-normal text-chart text-ink3 md:hidden">
+            {key}, {rangeWords(population.definition)}
+          </span>
+        </>
+      ),
+    },
+    {
+      id: 'ranges',
+      head: (
+        <>
+          <JupiterMass /> · AU
+        </>
+      ),
+      name: 'ranges, Jupiter masses · AU',
+      className: 'whitespace-nowrap max-md:hidden',
+      isUnsorted: true,
+      value: ({ population }) => rangeWords(population.definition),
+    },
+    {
+      id: 'stars',
+      head: 'stars',
+      name: 'stars',
+      isNumeric: true,
+      className: 'max-md:hidden',
+      value: (analysis) => newestFinished(analysis)?.stars ?? null,
+    },
+    {
+      id: 'detections',
+      head: 'det.',
+      name: 'detections',
+      isNumeric: true,
+      className: 'max-md:hidden',
+      value: (analysis) => newestFinished(analysis)?.detections ?? null,
+    },
+    {
+      id: 'interval',
+      head: (
+        <>
+          <span className="sr-only">interval</span>
+          <IntervalAxis max={max} unit="" />
+        </>
+      ),
+      name: 'interval',
+      className: 'max-lg:hidden',
+      isUnsorted: true,
+      isUnwritten: true,
+      value: () => null,
+      cell: (analysis) => <RunMark run={newestFinished(analysis)} analysis={analysis} max={max} />,
+    },
+    {
+      id: 'limit',
+      head: 'limit',
+      name: 'upper limit',
+      isNumeric: true,
+      value: (analysis) => newestFinished(analysis)?.limit ?? null,
+      also: [
+        {
+          name: 'quantity',
+          value: (analysis) => newestFinished(analysis)?.quantity ?? null,
+        },
+        {
+          name: 'credible level',
+          value: (analysis) => newestFinished(analysis)?.credibleLevel ?? null,
+        },
+        {
+          name: 'conditions',
+          value: (analysis) => {
+            const run = newestFinished(analysis);
+            return run ? limitNote(analysis, run) : null;
+          },
+        },
+      ],
+      cell: (analysis) => <LimitOf analysis={analysis} />,
+    },
+    {
+      id: 'state',
+      head: 'state',
+      name: 'state',
+      className: 'whitespace-nowrap max-md:hidden',
+      value: (analysis) => stateOf(analysis, newestFinished(analysis)).words,
+      cell: (analysis) => {
+        const { kind, words } = stateOf(analysis, newestFinished(analysis));
+        return <StateMark kind={kind}>{words}</StateMark>;
+      },
+    },
+  ];
+}
+
+function LimitOf({ analysis }: { analysis: AnalysisView }) {
+  const run = newestFinished(analysis);
+  if (run?.limit == null || !run.quantity) return '–';
+  return (
+    <>
+      <span className="limit">{formatLimit(run.limit, run.quantity)}</span>
+      <span className="block text-chart text-ink3">{limitNote(analysis, run)}</span>
+    </>
+  );
+}
+
+interface AnalysisTableProps {
+  collaboration: string;
+  analyses: AnalysisView[];
+  picked?: string[];
+  /** Given, analyses can be ticked for comparison, and words and states narrow the list. */
+  onPick?(keys: string[]): void;
+}
+
+const states: Facet<AnalysisView> = {
+  id: 'state',
+  label: 'State',
+  any: 'any state',
+  options: ['Running', 'Failed', 'Older inputs', 'Changed', 'Draft', 'No run yet'].map((words) => ({
+    value: words,
+    label: words.toLowerCase(),
+  })),
+  keeps: (analysis, value) => stateOf(analysis, newestFinished(analysis)).words === value,
+};
+
+/** Analyses with their intervals on one axis. */
 export function AnalysisTable({
   collaboration,
   analyses,
   picked = [],
   onPick,
-}: {
-  collaboration: string;
-  analyses: AnalysisView[];
-  picked?: string[];
-  onPick?(key: string): void;
-}) {
+}: AnalysisTableProps) {
   const limits = analyses.flatMap((analysis) => newestFinished(analysis)?.limit ?? []);
   const max = limits.length > 0 ? intervalMax(limits) : 1;
+  const columns = useMemo(() => columnsOf(collaboration, max), [collaboration, max]);
+  const isWholePage = onPick !== undefined;
   return (
-    <Table caption="Analyses with the upper limit of their newest run">
-      <TableHead>
-        <tr>
-          {onPick && (
-            <HeadCell>
-              <span className="sr-only">compare</span>
-            </HeadCell>
-          )}
-          <HeadCell className="max-md:hidden">key</HeadCell>
-          <HeadCell>analysis</HeadCell>
-          <HeadCell className="max-md:hidden">
-            <JupiterMass /> · AU
-          </HeadCell>
-          <HeadCell isNumeric className="max-md:hidden">
-            stars
-          </HeadCell>
-          <HeadCell isNumeric className="max-md:hidden">
-            det.
-          </HeadCell>
-          <HeadCell className="pb-0 max-lg:hidden">
-            <span className="sr-only">interval</span>
-            <IntervalAxis max={max} unit="" />
-          </HeadCell>
-          <HeadCell isNumeric>limit</HeadCell>
-          <HeadCell className="max-md:hidden">state</HeadCell>
-        </tr>
-      </TableHead>
-      <TableBody>
-        {analyses.map((analysis) => {
-          const run = newestFinished(analysis);
-          const { definition } = analysis.population;
-          return (
-            <Row key={analysis.id} isSelected={picked.includes(analysis.key)}>
-              {onPick && (
-                <Cell className="w-8">
-                  <label className="flex size-6 items-center justify-center max-md:size-11">
-                    <input
-                      type="checkbox"
-                      className="size-[18px] accent-(--ink)"
-                      checked={picked.includes(analysis.key)}
-                      disabled={!run}
-                      onChange={() => onPick(analysis.key)}
-                    />
-                    <span className="sr-only">Compare {analysis.key}</span>
-                  </label>
-                </Cell>
-              )}
-              <Cell className="whitespace-nowrap text-ink3 max-md:hidden">{analysis.key}</Cell>
-              <Cell isRowHead>
-                <Link
-                  href={`/${collaboration}/analyses/${analysis.key}`}
-                  className="text-ink max-md:inline-block max-md:py-2"
-                >
-                  {analysis.name}
-                </Link>
-                <span className="block font-normal text-chart text-ink3 md:hidden">
-                  {analysis.key}, {rangeWords(definition)}
-                </span>
-              </Cell>
-              <Cell className="whitespace-nowrap max-md:hidden">{rangeWords(definition)}</Cell>
-              <Cell isNumeric className="max-md:hidden">
-                {run?.stars ?? '–'}
-              </Cell>
-              <Cell isNumeric className="max-md:hidden">
-                {run?.detections ?? '–'}
-              </Cell>
-              <Cell className="max-lg:hidden">
-                <RunMark run={run} analysis={analysis} max={max} />
-              </Cell>
-              <Cell isNumeric>
-                {run?.limit != null && run.quantity ? (
-                  <>
-                    <span className="limit">{formatLimit(run.limit, run.quantity)}</span>
-                    <span className="block text-chart text-ink3">{limitNote(analysis, run)}</span>
-                  </>
-                ) : (
-                  '–'
-                )}
-              </Cell>
-              <Cell className="whitespace-nowrap max-md:hidden">
-                <StateOf analysis={analysis} run={run} />
-              </Cell>
-            </Row>
-          );
-        })}
-      </TableBody>
-    </Table>
+    <DataTable
+      caption="Analyses with the upper limit of their newest run"
+      rows={analyses}
+      columns={columns}
+      rowId={({ key }) => key}
+      noun={{ one: 'analysis', many: 'analyses' }}
+      searchLabel={isWholePage ? 'Name or key' : undefined}
+      textOf={({ key, name }) => `${key} ${name}`}
+      facets={isWholePage ? [states] : undefined}
+      fileName={isWholePage ? `${collaboration}-analyses` : undefined}
+      isInAddress={isWholePage}
+      selection={
+        onPick && {
+          ids: new Set(picked),
+          onChange: (keys) => onPick([...keys]),
+          label: ({ key }) => `Compare ${key}`,
+          canSelect: (analysis) => newestFinished(analysis) !== undefined,
+        }
+      }
+    />
   );
 }
 
@@ -173,10 +246,13 @@ function RunMark({
   );
 }
 
-function StateOf({ analysis, run }: { analysis: AnalysisView; run: RunSummary | undefined }) {
-  if (analysis.state === 'running') return <StateMark kind="running">Running</StateMark>;
-  if (analysis.state === 'failed') return <StateMark kind="bad">Failed</StateMark>;
-  if (run?.hasOlderInputs) return <StateMark kind="warn">Older inputs</StateMark>;
-  if (analysis.state === 'changed') return <StateMark kind="unsaved">Changed</StateMark>;
-  return <StateMark kind="draft">{run ? 'Draft' : 'No run yet'}</StateMark>;
+function stateOf(
+  analysis: AnalysisView,
+  run: RunSummary | undefined,
+): { kind: StateKind; words: string } {
+  if (analysis.state === 'running') return { kind: 'running', words: 'Running' };
+  if (analysis.state === 'failed') return { kind: 'bad', words: 'Failed' };
+  if (run?.hasOlderInputs) return { kind: 'warn', words: 'Older inputs' };
+  if (analysis.state === 'changed') return { kind: 'unsaved', words: 'Changed' };
+  return { kind: 'draft', words: run ? 'Draft' : 'No run yet' };
 }

@@ -8,26 +8,32 @@ import {
   proposedSchema,
   type StarList,
   type StarPage,
+  type StarView,
   starListSchema,
   starPageSchema,
 } from '@/lib/schemas/stars';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
-export interface StarFilter {
-  q?: string;
-  survey?: string;
-  only?: string;
-  offset: number;
-  limit: number;
-}
+/** Most stars of one answer. */
+const PAGE = 500;
 
-/** A page of stars; the former one stays while the next is on its way. */
-export function useStars(collaboration: string, filter: StarFilter, fallback?: StarList) {
+/** Every star, page after page; those of the first page are there from the beginning. */
+export function useAllStars(collaboration: string, fallback: StarList) {
   return useSWR(
-    withQuery(apiPath(collaboration, 'stars'), { ...filter }),
-    (path) => request(path, starListSchema),
-    { fallbackData: fallback, keepPreviousData: true, revalidateOnFocus: false },
+    apiPath(collaboration, 'stars'),
+    async (path) => {
+      const stars: StarView[] = [];
+      for (;;) {
+        const page = await request(
+          withQuery(path, { limit: PAGE, offset: stars.length }),
+          starListSchema,
+        );
+        stars.push(...page.stars);
+        if (page.stars.length === 0 || stars.length >= page.total) return { ...page, stars };
+      }
+    },
+    { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
 

@@ -1,47 +1,25 @@
 'use client';
 
-import { useState } from 'react';
-import { useStars } from '@/components/hooks/use-stars';
-import { Button } from '@/components/ui/button';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAllStars } from '@/components/hooks/use-stars';
 import { EmptyState } from '@/components/ui/empty-state';
-import { SelectField } from '@/components/ui/select-field';
-import { TextField } from '@/components/ui/text-field';
+import { Notice } from '@/components/ui/notice';
+import { TextAction } from '@/components/ui/text-action';
 import type { StarList } from '@/lib/schemas/stars';
 import { StarTable } from './star-table';
 import { StarTabs } from './star-tabs';
 
 interface StarsScreenProps {
   collaboration: string;
+  /** The first of them; the others follow. */
   initial: StarList;
   surveys: { slug: string; name: string }[];
 }
 
-const PAGE = 100;
-const only = [
-  { value: '', label: 'all stars' },
-  { value: 'shared', label: 'in several surveys' },
-  { value: 'undecided', label: 'with a pair to decide' },
-  { value: 'age-conflict', label: 'ages differ over 2 σ' },
-  { value: 'distance-conflict', label: 'distances differ over 2 σ' },
-  { value: 'adopted', label: 'with an adopted value' },
-];
-
 /** Every star of the collaboration once: search, filters and their count. */
 export function StarsScreen({ collaboration, initial, surveys }: StarsScreenProps) {
-  const [filter, setFilter] = useState({ q: '', survey: '', only: '', offset: 0 });
-  const change = (part: Partial<typeof filter>) => setFilter({ ...filter, offset: 0, ...part });
-  const { data: list = initial } = useStars(
-    collaboration,
-    {
-      q: filter.q.trim() || undefined,
-      survey: filter.survey || undefined,
-      only: filter.only || undefined,
-      offset: filter.offset,
-      limit: PAGE,
-    },
-    initial,
-  );
-  const { counts, total } = list;
+  const { data: list = initial, error, mutate } = useAllStars(collaboration, initial);
+  const { counts, total, stars } = list;
   if (counts.stars === 0) {
     return (
       <EmptyState title="No star yet">
@@ -50,7 +28,7 @@ export function StarsScreen({ collaboration, initial, surveys }: StarsScreenProp
       </EmptyState>
     );
   }
-  const last = Math.min(filter.offset + PAGE, total);
+  const isPart = stars.length < total;
   return (
     <>
       <StarTabs
@@ -59,55 +37,22 @@ export function StarsScreen({ collaboration, initial, surveys }: StarsScreenProp
         stars={counts.stars}
         undecided={counts.undecided}
       />
-      <div className="mb-3 grid items-end gap-3 md:grid-cols-[minmax(0,1fr)_200px_240px]">
-        <TextField
-          label="Find by name or Gaia number"
-          type="search"
-          value={filter.q}
-          maxLength={100}
-          onChange={(event) => change({ q: event.target.value })}
-        />
-        <SelectField
-          label="Survey"
-          value={filter.survey}
-          onChange={(event) => change({ survey: event.target.value })}
-          options={[
-            { value: '', label: 'any survey' },
-            ...surveys.map(({ slug, name }) => ({ value: slug, label: name })),
-          ]}
-        />
-        <SelectField
-          label="Show"
-          value={filter.only}
-          onChange={(event) => change({ only: event.target.value })}
-          options={only}
-        />
-      </div>
-      <p className="mb-1 text-ink2 text-note" aria-live="polite">
-        {total === counts.stars ? `${total} stars` : `${total} of ${counts.stars} stars`}
-        {total > PAGE && `, ${filter.offset + 1} to ${last} shown`}
-      </p>
-      {total > 0 ? (
-        <StarTable collaboration={collaboration} stars={list.stars} />
-      ) : (
-        <p className="py-4 text-ink3">No star fits these filters.</p>
+      {isPart && error !== undefined && (
+        <Notice
+          tone="bad"
+          title={`Only ${stars.length} of ${total} stars are here.`}
+          actions={<TextAction onClick={() => void mutate()}>Ask for the rest</TextAction>}
+          isAnnounced
+        >
+          {sentenceOf(error)}
+        </Notice>
       )}
-      {total > PAGE && (
-        <div className="mt-3 flex gap-2">
-          <Button
-            disabledReason={filter.offset === 0 ? 'These are the first' : undefined}
-            onClick={() => setFilter({ ...filter, offset: Math.max(0, filter.offset - PAGE) })}
-          >
-            Earlier
-          </Button>
-          <Button
-            disabledReason={last >= total ? 'These are the last' : undefined}
-            onClick={() => setFilter({ ...filter, offset: filter.offset + PAGE })}
-          >
-            Later
-          </Button>
-        </div>
+      {isPart && error === undefined && (
+        <p className="mb-2 text-ink3 text-note" role="status">
+          {stars.length} of {total} stars are here; the others are on their way.
+        </p>
       )}
+      <StarTable collaboration={collaboration} stars={stars} surveys={surveys} />
     </>
   );
 }

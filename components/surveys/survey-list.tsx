@@ -32,5 +32,5 @@ export function SurveyListPanel({ collaboration, initial, canAdd }: SurveyListPa
       </EmptyState>
     );
   }
-  return <SurveyTable collaboration={collaboration} list={list} />;
+  return <SurveyTable collaboration={collaboration} list={list} isWholePage />;
 }

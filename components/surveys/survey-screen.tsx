@@ -1,6 +1,6 @@
 'use client';
 
-import { useRouter } from 'next/navigation';
+import { useRouter, useSearchParams } from 'next/navigation';
 import { useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
@@ -93,7 +93,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
     survey.slug,
     props.companions,
   );
-  const [selectedId, setSelectedId] = useState<string | null>(null);
+  const [selectedId, setSelectedId] = useState(useSearchParams().get('target'));
   const [refusal, setRefusal] = useState<string | null>(null);
   const [isSetting, setSetting] = useState(false);
   const panel = useRef<HTMLDivElement>(null);

@@ -1,9 +1,13 @@
+'use client';
+
 import Link from 'next/link';
+import { useMemo } from 'react';
 import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { seriesColour } from '@/components/charts/series';
 import { Sparkline } from '@/components/charts/sparkline';
+import type { DataColumn } from '@/components/ui/data-table/column';
+import { DataTable } from '@/components/ui/data-table/data-table';
 import { StateMark } from '@/components/ui/state-mark';
-import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
 
 /** "2015–2019", one year alone, or a dash. */
@@ -28,130 +32,161 @@ function MapsState({ survey }: { survey: SurveyView }) {
 /** Columns that a narrow screen leaves to the survey's own page. */
 const wide = 'max-md:hidden';
 
-function SurveyRow({
-  collaboration,
-  survey,
-  most,
-}: {
-  collaboration: string;
-  survey: SurveyView;
-  most: number;
-}) {
+function SurveyName({ collaboration, survey }: { collaboration: string; survey: SurveyView }) {
   return (
-    <Row>
-      <Cell isRowHead>
-        <span className="inline-flex items-center gap-2 whitespace-nowrap">
-          <span
-            aria-hidden="true"
-            className="size-2.5 shrink-0"
-            style={{ background: seriesColour(survey.position) }}
-          />
-          <Link href={`/${collaboration}/surveys/${survey.slug}`} className="text-ink">
-            {survey.name}
-          </Link>
-          {survey.shared ? (
-            <span className="font-normal text-ink3">
-              {survey.shared.isWithdrawn ? 'withdrawn by' : 'by'} {survey.shared.owner}
-            </span>
-          ) : (
-            survey.isArchived && <span className="font-normal text-ink3">archived</span>
-          )}
+    <span className="inline-flex items-center gap-2 whitespace-nowrap">
+      <span
+        aria-hidden="true"
+        className="size-2.5 shrink-0"
+        style={{ background: seriesColour(survey.position) }}
+      />
+      <Link href={`/${collaboration}/surveys/${survey.slug}`} className="text-ink">
+        {survey.name}
+      </Link>
+      {survey.shared ? (
+        <span className="font-normal text-ink3">
+          {survey.shared.isWithdrawn ? 'withdrawn by' : 'by'} {survey.shared.owner}
         </span>
-      </Cell>
-      <Cell className={wide}>{survey.band}</Cell>
-      <Cell className={`whitespace-nowrap ${wide}`}>{observedYears(survey)}</Cell>
-      <Cell className={`whitespace-nowrap ${wide}`}>{survey.lead?.name ?? '–'}</Cell>
-      <Cell isNumeric>{survey.targets}</Cell>
-      <Cell isNumeric className={wide}>
-        {survey.alsoInAnother}
-      </Cell>
-      <Cell className="whitespace-nowrap">
-        <MapsState survey={survey} />
-      </Cell>
-      <Cell className={wide}>
-        {survey.summedCompleteness === null ? (
-          '–'
-        ) : (
-          <ProbabilityBar
-            value={survey.summedCompleteness / most}
-            colour={seriesColour(survey.position)}
-            width={120}
-          />
-        )}
-      </Cell>
-      <Cell isNumeric>{survey.summedCompleteness?.toFixed(1) ?? '–'}</Cell>
-      <Cell className={wide}>
-        {survey.depth && (
-          <Sparkline
-            xs={Float64Array.from(survey.depth.semiMajorAxisAu)}
-            ys={Float64Array.from(survey.depth.stars)}
-            isLogX
-            label={`Depth of search of ${survey.name} from ${survey.depth.semiMajorAxisAu[0]} to ${survey.depth.semiMajorAxisAu.at(-1)} AU`}
-          />
-        )}
-      </Cell>
-    </Row>
+      ) : (
+        survey.isArchived && <span className="font-normal text-ink3">archived</span>
+      )}
+    </span>
   );
 }
 
-interface SurveyTableProps {
-  collaboration: string;
-  list: SurveyList;
+function SummedBar({ survey, most }: { survey: SurveyView; most: number }) {
+  if (survey.summedCompleteness === null) return '–';
+  return (
+    <span className="inline-flex items-center justify-end gap-3">
+      <span className={wide}>
+        <ProbabilityBar
+          value={survey.summedCompleteness / most}
+          colour={seriesColour(survey.position)}
+          width={120}
+        />
+      </span>
+      {survey.summedCompleteness.toFixed(1)}
+    </span>
+  );
 }
 
-/** Surveys with their sensitivity, and the total in which every star counts once. */
-export function SurveyTable({ collaboration, list }: SurveyTableProps) {
+function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyView>[] {
   const most = Math.max(1e-9, ...list.surveys.map((survey) => survey.summedCompleteness ?? 0));
   const ready = list.surveys.reduce((sum, survey) => sum + survey.maps.ready, 0);
   const shared = list.overlaps.reduce(
     (sum, set) => sum + (set.surveys.length > 1 ? set.stars : 0),
     0,
   );
+  return [
+    {
+      id: 'survey',
+      head: 'survey',
+      name: 'survey',
+      isRowHead: true,
+      value: ({ name }) => name,
+      cell: (survey) => <SurveyName collaboration={collaboration} survey={survey} />,
+      total: 'Every star once',
+    },
+    { id: 'band', head: 'band', name: 'band', className: wide, value: ({ band }) => band },
+    {
+      id: 'observed',
+      head: 'observed',
+      name: 'first year',
+      className: `whitespace-nowrap ${wide}`,
+      value: ({ observedFrom, observedTo }) => observedFrom ?? observedTo,
+      cell: observedYears,
+      also: [{ name: 'last year', value: ({ observedTo }) => observedTo }],
+    },
+    {
+      id: 'lead',
+      head: 'lead',
+      name: 'lead',
+      className: `whitespace-nowrap ${wide}`,
+      value: ({ lead }) => lead?.name ?? null,
+    },
+    {
+      id: 'targets',
+      head: 'targets',
+      name: 'targets',
+      isNumeric: true,
+      value: ({ targets }) => targets,
+      total: list.stars,
+    },
+    {
+      id: 'also',
+      head: 'also in another',
+      name: 'also in another survey',
+      isNumeric: true,
+      className: wide,
+      value: ({ alsoInAnother }) => alsoInAnother,
+      total: shared,
+    },
+    {
+      id: 'maps',
+      head: (
+        <>
+          maps<span className={wide}> ready</span>
+        </>
+      ),
+      name: 'maps ready',
+      className: 'whitespace-nowrap',
+      value: ({ maps }) => maps.ready,
+      cell: (survey) => <MapsState survey={survey} />,
+      total: `${ready} of ${list.entries}`,
+    },
+    {
+      id: 'sum',
+      head: (
+        <>
+          sum<span className={wide}> of detection probabilities</span>
+        </>
+      ),
+      name: 'sum of detection probabilities',
+      isNumeric: true,
+      value: ({ summedCompleteness }) => summedCompleteness,
+      cell: (survey) => <SummedBar survey={survey} most={most} />,
+    },
+    {
+      id: 'depth',
+      head: '1–1000 AU',
+      name: 'depth of search',
+      isUnsorted: true,
+      isUnwritten: true,
+      className: wide,
+      value: () => null,
+      cell: ({ name, depth }) =>
+        depth && (
+          <Sparkline
+            xs={Float64Array.from(depth.semiMajorAxisAu)}
+            ys={Float64Array.from(depth.stars)}
+            isLogX
+            label={`Depth of search of ${name} from ${depth.semiMajorAxisAu[0]} to ${depth.semiMajorAxisAu.at(-1)} AU`}
+          />
+        ),
+    },
+  ];
+}
+
+interface SurveyTableProps {
+  collaboration: string;
+  list: SurveyList;
+  /** The page is about the surveys: its address holds the order, and there is a file. */
+  isWholePage?: boolean;
+}
+
+/** Surveys with their sensitivity, and the total in which every star counts once. */
+export function SurveyTable({ collaboration, list, isWholePage = false }: SurveyTableProps) {
+  const columns = useMemo(() => columnsOf(collaboration, list), [collaboration, list]);
   return (
-    <Table caption="Surveys of the collaboration">
-      <TableHead>
-        <Row>
-          <HeadCell>survey</HeadCell>
-          <HeadCell className={wide}>band</HeadCell>
-          <HeadCell className={wide}>observed</HeadCell>
-          <HeadCell className={wide}>lead</HeadCell>
-          <HeadCell isNumeric>targets</HeadCell>
-          <HeadCell isNumeric className={wide}>
-            also in another
-          </HeadCell>
-          <HeadCell>maps ready</HeadCell>
-          <HeadCell colSpan={2} className={wide}>
-            sum of detection probabilities
-          </HeadCell>
-          <HeadCell isNumeric className="md:hidden">
-            sum
-          </HeadCell>
-          <HeadCell className={wide}>1–1000 AU</HeadCell>
-        </Row>
-      </TableHead>
-      <TableBody>
-        {list.surveys.map((survey) => (
-          <SurveyRow key={survey.id} collaboration={collaboration} survey={survey} most={most} />
-        ))}
-        <Row isTotal>
-          <Cell isRowHead className="whitespace-nowrap">
-            Every star once
-          </Cell>
-          <Cell className={wide} />
-          <Cell className={wide} />
-          <Cell className={wide} />
-          <Cell isNumeric>{list.stars}</Cell>
-          <Cell isNumeric className={wide}>
-            {shared}
-          </Cell>
-          <Cell className="whitespace-nowrap">
-            {ready} of {list.entries}
-          </Cell>
-          <Cell className={wide} />
-          <Cell />
-          <Cell className={wide} />
-        </Row>
-      </TableBody>
-    </Table>
+    <DataTable
+      caption="Surveys of the collaboration"
+      rows={list.surveys}
+      columns={columns}
+      rowId={({ id }) => id}
+      noun={{ one: 'survey', many: 'surveys' }}
+      fileName={isWholePage ? `${collaboration}-surveys` : undefined}
+      isInAddress={isWholePage}
+      hasTotal
+    />
   );
 }

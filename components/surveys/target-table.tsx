@@ -1,18 +1,15 @@
 'use client';
 
-import { useMemo, useState } from 'react';
+import { useMemo } from 'react';
 import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { seriesColour } from '@/components/charts/series';
 import { Sparkline } from '@/components/charts/sparkline';
-import { Button } from '@/components/ui/button';
-import { SelectField } from '@/components/ui/select-field';
+import type { DataColumn, Facet } from '@/components/ui/data-table/column';
+import { DataTable } from '@/components/ui/data-table/data-table';
 import { StateMark } from '@/components/ui/state-mark';
-import { Cell, ErrorTerm, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import { TextField } from '@/components/ui/text-field';
+import { ErrorTerm } from '@/components/ui/table';
 import type { TargetView } from '@/lib/schemas/surveys';
 import { formatErrorPart, formatMeasured } from './measured';
-
-const PAGE = 21;
 
 /** Columns that a narrow screen leaves to the panel of the chosen star. */
 const wide = 'max-md:hidden';
@@ -32,89 +29,186 @@ function MapMark({ target }: { target: TargetView }) {
   );
 }
 
-function TargetLine({
-  target,
-  isSelected,
-  onSelect,
-}: {
-  target: TargetView;
-  isSelected: boolean;
-  onSelect(): void;
-}) {
-  const curve = target.curves.at(-1);
-  return (
-    <Row isSelected={isSelected} onClick={onSelect} className="cursor-pointer">
-      <Cell isRowHead className="whitespace-nowrap">
-        <button
-          type="button"
-          className="text-left font-semibold"
-          aria-pressed={isSelected}
-          onClick={onSelect}
-        >
-          {target.name}
-        </button>
-        <span className="block font-normal text-chart text-ink3 md:hidden">
-          {[target.spectralType, target.movingGroup ?? 'field'].filter(Boolean).join(', ')}
-        </span>
-      </Cell>
-      <Cell className={wide}>{target.spectralType ?? '–'}</Cell>
-      <Cell isNumeric className={wide}>
-        {target.distancePc === null
-          ? '–'
-          : formatMeasured(target.distancePc, target.distanceErrorPc)}
-        {target.distanceErrorPc !== null && (
-          <ErrorTerm>{formatErrorPart(target.distanceErrorPc)}</ErrorTerm>
-        )}
-      </Cell>
-      <Cell isNumeric className={wide}>
-        {target.ageMyr === null ? '–' : formatMeasured(target.ageMyr, null)}
-        {target.ageMyr !== null && (
-          <ErrorTerm>
-            {target.ageUpperMyr === null
-              ? '?'
-              : formatErrorPart(target.ageUpperMyr - target.ageMyr)}
-          </ErrorTerm>
-        )}
-      </Cell>
-      <Cell className={`whitespace-nowrap ${wider}`}>{target.movingGroup ?? 'field'}</Cell>
-      <Cell className={wider}>
-        {curve && (
+const groupOf = ({ movingGroup }: TargetView) => movingGroup ?? 'field';
+const half = (upper: number | null, middle: number | null) =>
+  upper === null || middle === null ? null : upper - middle;
+
+/** The state of a target's map as a word of the file. */
+function checkWords(target: TargetView): string {
+  if (target.leftOutReason !== null) return `left out: ${target.leftOutReason}`;
+  if (target.mapState === 'ready') return target.checks.join('; ');
+  return target.mapFault ?? target.mapState;
+}
+
+const nameColumn = (
+  selectedId: string | null,
+  onSelect: (id: string) => void,
+): DataColumn<TargetView> => ({
+  id: 'star',
+  head: 'star',
+  name: 'star',
+  isRowHead: true,
+  className: 'whitespace-nowrap',
+  value: ({ name }) => name,
+  cell: (target) => (
+    <>
+      <button
+        type="button"
+        className="text-left font-semibold max-md:min-h-11"
+        aria-pressed={target.id === selectedId}
+        onClick={(event) => {
+          event.stopPropagation();
+          onSelect(target.id);
+        }}
+      >
+        {target.name}
+      </button>
+      <span className="block font-normal text-chart text-ink3 md:hidden">
+        {[target.spectralType, groupOf(target)].filter(Boolean).join(', ')}
+      </span>
+    </>
+  ),
+});
+
+const valueColumns: DataColumn<TargetView>[] = [
+  {
+    id: 'type',
+    head: 'type',
+    name: 'spectral type',
+    className: wide,
+    value: ({ spectralType }) => spectralType,
+  },
+  {
+    id: 'distance',
+    head: 'distance, pc',
+    name: 'distance, pc',
+    isNumeric: true,
+    className: wide,
+    value: ({ distancePc }) => distancePc,
+    also: [{ name: 'distance error, pc', value: ({ distanceErrorPc }) => distanceErrorPc }],
+    cell: ({ distancePc, distanceErrorPc }) => (
+      <>
+        {distancePc === null ? '–' : formatMeasured(distancePc, distanceErrorPc)}
+        {distanceErrorPc !== null && <ErrorTerm>{formatErrorPart(distanceErrorPc)}</ErrorTerm>}
+      </>
+    ),
+  },
+  {
+    id: 'age',
+    head: 'age, Myr',
+    name: 'age, Myr',
+    isNumeric: true,
+    className: wide,
+    value: ({ ageMyr }) => ageMyr,
+    also: [
+      { name: 'age at 84 per cent, Myr', value: ({ ageUpperMyr }) => ageUpperMyr },
+      { name: 'age at 16 per cent, Myr', value: ({ ageLowerMyr }) => ageLowerMyr },
+    ],
+    cell: ({ ageMyr, ageUpperMyr }) => {
+      const error = half(ageUpperMyr, ageMyr);
+      return (
+        <>
+          {ageMyr === null ? '–' : formatMeasured(ageMyr, null)}
+          {ageMyr !== null && (
+            <ErrorTerm>{error === null ? '?' : formatErrorPart(error)}</ErrorTerm>
+          )}
+        </>
+      );
+    },
+  },
+  {
+    id: 'member',
+    head: 'group',
+    name: 'moving group',
+    className: `whitespace-nowrap ${wider}`,
+    value: groupOf,
+  },
+  {
+    id: 'curve',
+    head: 'curve',
+    name: 'contrast curve',
+    className: wider,
+    isUnsorted: true,
+    isUnwritten: true,
+    value: () => null,
+    cell: ({ name, curves }) => {
+      const curve = curves.at(-1);
+      return (
+        curve && (
           <Sparkline
             width={68}
             xs={Float64Array.from(curve.separationArcsec)}
             ys={Float64Array.from(curve.contrastMag)}
             isLogX
             isDownward
-            label={`Contrast curve of ${target.name}`}
+            label={`Contrast curve of ${name}`}
           />
-        )}
-      </Cell>
-      <Cell>
-        {target.probability !== null && <ProbabilityBar value={target.probability} width={52} />}
-      </Cell>
-      <Cell isNumeric>
-        {target.probability === null ? '–' : `${Math.round(100 * target.probability)} %`}
-      </Cell>
-      <Cell className={wide}>
-        <span className="flex gap-x-2">
-          {target.alsoIn.length === 0 && '–'}
-          {target.alsoIn.map((survey) => (
-            <span
-              key={survey.slug}
-              className="border-l-[3px] pl-1.5 text-[12px] tracking-wide"
-              style={{ borderColor: seriesColour(survey.position) }}
-            >
-              {survey.name}
-            </span>
-          ))}
+        )
+      );
+    },
+  },
+  {
+    id: 'seen',
+    head: (
+      <>
+        <span className="max-md:hidden">detection probability</span>
+        <span className="md:hidden">seen</span>
+      </>
+    ),
+    name: 'detection probability',
+    isNumeric: true,
+    value: ({ probability }) => probability,
+    cell: ({ probability }) =>
+      probability === null ? (
+        '–'
+      ) : (
+        <span className="inline-flex items-center gap-2.5">
+          <ProbabilityBar value={probability} width={52} />
+          <span className="min-w-11">{`${Math.round(100 * probability)}\u2009%`}</span>
         </span>
-      </Cell>
-      <Cell className="whitespace-nowrap">
-        <MapMark target={target} />
-      </Cell>
-    </Row>
-  );
-}
+      ),
+  },
+  {
+    id: 'also',
+    head: 'also in',
+    name: 'also in',
+    className: wide,
+    value: ({ alsoIn }) => alsoIn.map(({ name }) => name).join('; ') || null,
+    cell: ({ alsoIn }) => (
+      <span className="flex gap-x-2">
+        {alsoIn.length === 0 && '–'}
+        {alsoIn.map((survey) => (
+          <span
+            key={survey.slug}
+            className="border-l-[3px] pl-1.5 text-[12px] tracking-wide"
+            style={{ borderColor: seriesColour(survey.position) }}
+          >
+            {survey.name}
+          </span>
+        ))}
+      </span>
+    ),
+  },
+  {
+    id: 'check',
+    head: 'check',
+    name: 'check',
+    className: 'whitespace-nowrap',
+    value: (target) => checkWords(target) || null,
+    cell: (target) => <MapMark target={target} />,
+  },
+];
+
+const sharing: Facet<TargetView> = {
+  id: 'shared',
+  label: 'Other surveys',
+  any: 'any survey',
+  options: [
+    { value: 'yes', label: 'in another survey' },
+    { value: 'no', label: 'in this survey only' },
+  ],
+  keeps: ({ alsoIn }, value) => alsoIn.length > 0 === (value === 'yes'),
+};
 
 interface TargetTableProps {
   targets: TargetView[];
@@ -122,121 +216,33 @@ interface TargetTableProps {
   onSelect(id: string): void;
 }
 
-type Sharing = 'any' | 'shared' | 'alone';
-
 /** Targets with filters that combine; the count of what is shown is always said. */
 export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps) {
-  const [words, setWords] = useState('');
-  const [group, setGroup] = useState('any');
-  const [sharing, setSharing] = useState<Sharing>('any');
-  const [start, setStart] = useState(0);
-  const groups = useMemo(
-    () => [...new Set(targets.map((target) => target.movingGroup ?? 'field'))].sort(),
-    [targets],
-  );
-  const shown = useMemo(() => {
-    const needle = words.trim().toLowerCase();
-    return targets.filter((target) => {
-      const own = target.movingGroup ?? 'field';
-      const text = `${target.name} ${target.spectralType ?? ''} ${own}`.toLowerCase();
-      if (needle !== '' && !text.includes(needle)) return false;
-      if (group !== 'any' && own !== group) return false;
-      if (sharing === 'any') return true;
-      return target.alsoIn.length > 0 === (sharing === 'shared');
-    });
-  }, [targets, words, group, sharing]);
-  const from = Math.min(start, Math.max(0, shown.length - 1));
-  const page = shown.slice(from, from + PAGE);
-  const change = (apply: () => void) => {
-    apply();
-    setStart(0);
-  };
+  const facets = useMemo(() => {
+    const groups = [...new Set(targets.map(groupOf))].sort();
+    const group: Facet<TargetView> = {
+      id: 'group',
+      label: 'Group',
+      any: 'any group',
+      options: groups.map((name) => ({ value: name, label: name })),
+      keeps: (target, value) => groupOf(target) === value,
+    };
+    return [group, sharing];
+  }, [targets]);
   return (
-    <div>
-      <div className="mb-2 flex flex-wrap items-end gap-x-3 gap-y-2 max-md:[&>div]:w-full">
-        <TextField
-          label="Find a star, group or type"
-          isLabelHidden
-          placeholder="Star, group or type"
-          value={words}
-          onChange={(event) => change(() => setWords(event.target.value))}
-        />
-        <SelectField
-          label="Group"
-          isLabelHidden
-          value={group}
-          onChange={(event) => change(() => setGroup(event.target.value))}
-          options={[
-            { value: 'any', label: 'any group' },
-            ...groups.map((name) => ({ value: name, label: name })),
-          ]}
-        />
-        <SelectField
-          label="Other surveys"
-          isLabelHidden
-          value={sharing}
-          onChange={(event) => change(() => setSharing(event.target.value as Sharing))}
-          options={[
-            { value: 'any', label: 'any survey' },
-            { value: 'shared', label: 'in another survey' },
-            { value: 'alone', label: 'in this survey only' },
-          ]}
-        />
-        <span className="ml-auto text-[14px] text-ink3" aria-live="polite">
-          by right ascension; {shown.length} of {targets.length} shown
-        </span>
-      </div>
-      <Table caption="Targets of the survey">
-        <TableHead>
-          <Row>
-            <HeadCell>star</HeadCell>
-            <HeadCell className={wide}>type</HeadCell>
-            <HeadCell isNumeric className={wide}>
-              distance, pc
-            </HeadCell>
-            <HeadCell isNumeric className={wide}>
-              age, Myr
-            </HeadCell>
-            <HeadCell className={wider}>group</HeadCell>
-            <HeadCell className={wider}>curve</HeadCell>
-            <HeadCell colSpan={2}>
-              <span className="max-md:hidden">detection probability</span>
-              <span className="md:hidden">seen</span>
-            </HeadCell>
-            <HeadCell className={wide}>also in</HeadCell>
-            <HeadCell>check</HeadCell>
-          </Row>
-        </TableHead>
-        <TableBody>
-          {page.map((target) => (
-            <TargetLine
-              key={target.id}
-              target={target}
-              isSelected={target.id === selectedId}
-              onSelect={() => onSelect(target.id)}
-            />
-          ))}
-        </TableBody>
-      </Table>
-      <div className="mt-3 flex items-center justify-between text-[14px] text-ink3">
-        <span>
-          {shown.length === 0
-            ? 'No target fits these filters'
-            : `Targets ${from + 1}–${from + page.length}`}
-        </span>
-        <span className="flex gap-2">
-          {from > 0 && (
-            <Button size="small" variant="quiet" onClick={() => setStart(Math.max(0, from - PAGE))}>
-              Back {PAGE}
-            </Button>
-          )}
-          {from + PAGE < shown.length && (
-            <Button size="small" variant="quiet" onClick={() => setStart(from + PAGE)}>
-              Next {Math.min(PAGE, shown.length - from - PAGE)}
-            </Button>
-          )}
-        </span>
-      </div>
-    </div>
+    <DataTable
+      caption="Targets of the survey"
+      rows={targets}
+      columns={[nameColumn(selectedId, onSelect), ...valueColumns]}
+      rowId={({ id }) => id}
+      noun={{ one: 'target', many: 'targets' }}
+      searchLabel="Star, group or type"
+      textOf={(target) => [target.name, target.spectralType, groupOf(target)].join(' ')}
+      facets={facets}
+      givenOrder="by right ascension"
+      fileName="targets"
+      currentId={selectedId}
+      onRowClick={({ id }) => onSelect(id)}
+    />
   );
 }

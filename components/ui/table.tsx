@@ -1,4 +1,4 @@
-import type { HTMLAttributes, ReactNode, TdHTMLAttributes, ThHTMLAttributes } from 'react';
+import type { ComponentProps, ReactNode, TdHTMLAttributes, ThHTMLAttributes } from 'react';
 
 interface TableProps {
   /** Read before the table; seen only with `isCaptionShown`. */
@@ -34,7 +34,7 @@ export function TableBody({ children }: { children: ReactNode }) {
   return <tbody>{children}</tbody>;
 }
 
-interface RowProps extends HTMLAttributes<HTMLTableRowElement> {
+interface RowProps extends ComponentProps<'tr'> {
   isSelected?: boolean;
   /** The last line, "every star once": bold under a stronger rule. */
   isTotal?: boolean;

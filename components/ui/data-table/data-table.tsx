@@ -1,0 +1,204 @@
+'use client';
+
+import type { ReactNode } from 'react';
+import { saveFile } from '@/components/charts/save-file';
+import { Cell, Row, TableBody, TableHead } from '../table';
+import type { DataColumn, Facet } from './column';
+import { FilterBar } from './filter-bar';
+import { rowsCsv } from './rows-csv';
+import { SelectBox, SelectHead } from './select-box';
+import { SortHead } from './sort-head';
+import { TableScroll } from './table-scroll';
+import { useDataRows } from './use-data-rows';
+import { useTableView } from './use-table-view';
+import { useVirtualRows } from './use-virtual-rows';
+
+interface DataTableProps<R extends object> {
+  caption: string;
+  rows: readonly R[];
+  columns: readonly DataColumn<R>[];
+  rowId(row: R): string;
+  /** "target", "targets": for the count. */
+  noun: { one: string; many: string };
+  /** Left out, there is no field for words. */
+  searchLabel?: string;
+  textOf?(row: R): string;
+  facets?: readonly Facet<R>[];
+  /** Said beside the count while the rows stand as they came: "by right ascension". */
+  givenOrder?: string;
+  /** Without its ending; left out, there is no file. */
+  fileName?: string;
+  selection?: {
+    ids: ReadonlySet<string>;
+    onChange(ids: Set<string>): void;
+    /** The name of a row's box: "Compare A-31". */
+    label(row: R): string;
+    canSelect?(row: R): boolean;
+  };
+  /** The row whose details stand beside the table. */
+  currentId?: string | null;
+  onRowClick?(row: R): void;
+  /** The last line holds the columns' totals. */
+  hasTotal?: boolean;
+  /** Two tables on a page cannot both keep their view in the address. */
+  isInAddress?: boolean;
+  /** Above the table, such as what can be done with the selected ones. */
+  tools?: ReactNode;
+}
+
+const none: readonly Facet<never>[] = [];
+
+function countWords(shown: number, all: number, { one, many }: { one: string; many: string }) {
+  if (shown === all) return `${all} ${all === 1 ? one : many}`;
+  return `${shown} of ${all} ${many}`;
+}
+
+/**
+ * Rows that can be ordered, narrowed, selected and taken along as a file; the view stands in the
+ * address. From a hundred rows on only those in sight are drawn, under a head that stays.
+ */
+export function DataTable<R extends object>(props: DataTableProps<R>) {
+  const { columns, noun, facets = none as readonly Facet<R>[], selection } = props;
+  const [view, onView] = useTableView(
+    facets.map(({ id }) => id),
+    props.isInAddress ?? true,
+  );
+  const table = useDataRows({ ...props, facets, view, onView });
+  const shown = table.getRowModel().rows;
+  const virtual = useVirtualRows(shown.length);
+  const isSelecting = selection !== undefined;
+  const width = columns.length + (isSelecting ? 1 : 0);
+  const drawn = virtual.items.map((item) => ({ item, row: shown[item.index] }));
+  const chosen = selection?.ids.size ?? 0;
+  const hasOrder = view.sort === null && props.givenOrder !== undefined;
+  const hasBar =
+    props.searchLabel !== undefined || facets.length > 0 || props.fileName !== undefined;
+  const count = [
+    ...(hasOrder ? [`${props.givenOrder}; `] : []),
+    countWords(shown.length, props.rows.length, noun),
+    ...(isSelecting ? [`, ${chosen} selected`] : []),
+  ].join('');
+  const csv = () =>
+    saveFile(
+      `${props.fileName}.csv`,
+      rowsCsv(
+        shown.map(({ original }) => original),
+        columns,
+      ),
+      'text/csv',
+    );
+  return (
+    <div className="min-w-0">
+      {hasBar && (
+        <FilterBar
+          searchLabel={props.searchLabel}
+          facets={facets}
+          view={view}
+          onView={onView}
+          count={count}
+          onCsv={props.fileName === undefined ? undefined : csv}
+        />
+      )}
+      {props.tools}
+      <TableScroll
+        caption={props.caption}
+        isVirtual={virtual.isOn}
+        scroller={virtual.scroller}
+        rowCount={virtual.isOn ? shown.length + 1 : undefined}
+      >
+        <TableHead>
+          <tr aria-rowindex={virtual.isOn ? 1 : undefined}>
+            {isSelecting && <SelectHead table={table} many={noun.many} />}
+            {columns.map((column) => {
+              const held = table.getColumn(column.id);
+              return (
+                <SortHead
+                  key={column.id}
+                  name={column.name}
+                  isNumeric={column.isNumeric ?? false}
+                  className={column.className ?? ''}
+                  direction={held?.getIsSorted() ?? false}
+                  onSort={column.isUnsorted ? undefined : held?.getToggleSortingHandler()}
+                >
+                  {column.head}
+                </SortHead>
+              );
+            })}
+          </tr>
+        </TableHead>
+        <TableBody>
+          {virtual.before > 0 && <Gap height={virtual.before} width={width} />}
+          {drawn.map(({ item, row }) => (
+            <Row
+              key={row.id}
+              ref={virtual.measure}
+              data-index={item.index}
+              aria-rowindex={virtual.isOn ? item.index + 2 : undefined}
+              isSelected={row.id === props.currentId || row.getIsSelected()}
+              className={props.onRowClick ? 'cursor-pointer' : ''}
+              onClick={props.onRowClick && (() => props.onRowClick?.(row.original))}
+            >
+              {selection && (
+                <SelectBox
+                  label={selection.label(row.original)}
+                  isChecked={row.getIsSelected()}
+                  isDisabled={selection.canSelect?.(row.original) === false}
+                  onToggle={row.getToggleSelectedHandler()}
+                />
+              )}
+              {columns.map((column) => (
+                <Cell
+                  key={column.id}
+                  isNumeric={column.isNumeric}
+                  isRowHead={column.isRowHead}
+                  className={column.className}
+                >
+                  {column.cell ? column.cell(row.original) : (column.value(row.original) ?? '–')}
+                </Cell>
+              ))}
+            </Row>
+          ))}
+          {virtual.after > 0 && <Gap height={virtual.after} width={width} />}
+          {shown.length === 0 && (
+            <tr>
+              <td colSpan={width} className="py-6 text-ink3">
+                No {noun.one} fits.{' '}
+                <button
+                  type="button"
+                  className="min-h-6 font-semibold text-act max-md:min-h-11"
+                  onClick={() => onView({ words: '', facets: {} })}
+                >
+                  Show all {props.rows.length}
+                </button>
+              </td>
+            </tr>
+          )}
+          {props.hasTotal && (
+            <Row isTotal>
+              {isSelecting && <Cell />}
+              {columns.map((column) => (
+                <Cell
+                  key={column.id}
+                  isNumeric={column.isNumeric}
+                  isRowHead={column.isRowHead}
+                  className={column.className}
+                >
+                  {column.total}
+                </Cell>
+              ))}
+            </Row>
+          )}
+        </TableBody>
+      </TableScroll>
+    </div>
+  );
+}
+
+/** Keeps the place of rows that are not drawn. */
+function Gap({ height, width }: { height: number; width: number }) {
+  return (
+    <tr>
+      <td colSpan={width} style={{ height, padding: 0 }} />
+    </tr>
+  );
+}
