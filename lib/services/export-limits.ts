@@ -1,8 +1,10 @@
 import {
-  type CsvColumn,
   type LatexStyle,
   type LatexTable,
-  writeCsv,
+  limitColumns,
+  posteriorColumns,
+  tableOfRows,
+  type WrittenTable,
   writeLatexTable,
 } from '@/lib/formats';
 import {
@@ -18,10 +20,35 @@ import { formatSignificant } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 
+/** What a release adds to the files of the runs that it froze. */
+export interface ReleaseFacts {
+  title: string;
+  version: number;
+  /** SPDX name. */
+  licence: string;
+  /** Where it stands. */
+  address: string;
+  year: number;
+  authors: { name: string; orcid?: string | undefined }[];
+  /** SHA-256 of its bundle, where there is one. */
+  checksum?: string | undefined;
+}
+
 /** A finished run with what its files need beside it. */
 export interface FinishedRun {
+  id: string;
+  collaborationId: string;
+  /** "A-31". */
   analysis: string;
+  analysisName: string;
   number: number;
+  seed: string;
+  finishedAt: string | null;
+  inputsDigest: string | null;
+  /** Something of the surveys came after the run read them. */
+  hasOlderInputs: boolean;
+  /** Absent while the run is a draft. */
+  release?: ReleaseFacts | undefined;
   recipe: AnalysisRecipe;
   population: Population;
   inputs: RunInputs;
@@ -30,15 +57,16 @@ export interface FinishedRun {
   engineVersion: string;
 }
 
-/** Every file of a run that is not frozen says so. */
-export const STATE = 'draft';
+/** Every file of a run that no release froze says so. */
+export const stateOf = ({ release }: Pick<FinishedRun, 'release'>): string =>
+  release ? `release ${release.version}: ${release.title}` : 'draft';
 
 type Quantity = RunResult['quantity'];
 
-type StatedRange = { [Edge in keyof PopulationBox]: number | null };
+export type StatedRange = { [Edge in keyof PopulationBox]: number | null };
 
 /** The ranges of a run's population; those of masses stay empty where they differ from star to star. */
-function statedRange(population: Population): StatedRange {
+export function statedRange(population: Population): StatedRange {
   if (population.form !== 'mass-ratio') return populationBox(population);
   const { semiMajorAxisMinAu, semiMajorAxisMaxAu } = population;
   return { massMinMjup: null, massMaxMjup: null, semiMajorAxisMinAu, semiMajorAxisMaxAu };
@@ -131,91 +159,63 @@ function intervalRows({ result }: FinishedRun): Row[] {
   });
 }
 
-/** Limits and intervals, one row per quantity, counting rule and level. */
-export function writeLimitsCsv(run: FinishedRun): string {
-  const rows = [...limitRows(run), ...intervalRows(run)];
+type Head = Pick<WrittenTable, 'provenance'>;
+
+/** Limits and intervals, one row per quantity, counting rule, interval and level. */
+export function limitsTable(run: FinishedRun, head: Head): WrittenTable {
   const { result, inputs, population, recipe } = run;
   const range = statedRange(population);
-  const same = (name: string, value: string | number | null): CsvColumn => ({
-    name,
-    values: rows.map(() => value),
-  });
-  const each = (name: string, value: (row: Row) => string | number | null): CsvColumn => ({
-    name,
-    values: rows.map(value),
-  });
-  return writeCsv([
-    same('analysis', run.analysis),
-    same('subset', inputs.surveys.map(({ slug }) => slug).join(' + ')),
-    each('likelihood', ({ quantity }) =>
-      quantity === 'host_fraction' ? 'host-fraction' : 'mean-number',
-    ),
-    same('population', `${inputs.population.key} version ${inputs.population.version}`),
-    each('rate_prior', ({ quantity }) => priorText(run, quantity)),
-    same('mass_min', range.massMinMjup),
-    same('mass_max', range.massMaxMjup),
-    same('semi_major_axis_min', range.semiMajorAxisMinAu),
-    same('semi_major_axis_max', range.semiMajorAxisMaxAu),
-    each('quantity', ({ quantity }) => quantity),
-    each('interval', ({ interval }) => interval),
-    each('credible_level', ({ level }) => level),
-    each('lower', ({ lower }) => lower),
-    each('estimate', ({ estimate }) => estimate),
-    each('upper', ({ upper }) => upper),
+  const same = {
+    analysis: run.analysis,
+    subset: inputs.surveys.map(({ slug }) => slug).join(' + '),
+    population: `${inputs.population.key} version ${inputs.population.version}`,
+    mass_min: range.massMinMjup,
+    mass_max: range.massMaxMjup,
+    semi_major_axis_min: range.semiMajorAxisMinAu,
+    semi_major_axis_max: range.semiMajorAxisMaxAu,
     // Every number is an integral: there is no Monte Carlo error.
-    each('mcse', () => null),
-    same('n_targets', result.stars),
-    each('n_companions', ({ isZero, quantity }) => countedDetections(run, isZero, quantity)),
-    same('effective_targets', result.exposure),
-    same('run', run.number),
-    same('engine_version', run.engineVersion),
-    each('counting_rule', ({ isZero, quantity }) => countingRule(run, isZero, quantity)),
-    each('candidates', ({ isZero }) => candidateWords(run, isZero)),
-    same('background', result.background),
-    each('prior_cut_at', ({ quantity }) =>
-      quantity === result.quantity ? result.priorCutAt : null,
-    ),
-    same('combination', inputs.combination),
-    same('credible_level_of_run', recipe.credibleLevel),
-    same('run_digest', run.resultDigest),
-    same('state', STATE),
-  ]);
+    mcse: null,
+    n_targets: result.stars,
+    effective_targets: result.exposure,
+    run: run.number,
+    engine_version: run.engineVersion,
+    background: result.background,
+    combination: inputs.combination,
+    credible_level_of_run: recipe.credibleLevel,
+    run_digest: run.resultDigest,
+    state: stateOf(run),
+  };
+  const rows = [...limitRows(run), ...intervalRows(run)].map((row) => ({
+    ...same,
+    likelihood: row.quantity === 'host_fraction' ? 'host-fraction' : 'mean-number',
+    rate_prior: priorText(run, row.quantity),
+    quantity: row.quantity,
+    interval: row.interval,
+    credible_level: row.level,
+    lower: row.lower,
+    estimate: row.estimate,
+    upper: row.upper,
+    n_companions: countedDetections(run, row.isZero, row.quantity),
+    counting_rule: countingRule(run, row.isZero, row.quantity),
+    candidates: candidateWords(run, row.isZero),
+    prior_cut_at: row.quantity === result.quantity ? result.priorCutAt : null,
+  }));
+  const title = `Limits and intervals of ${run.analysis}, run ${run.number}`;
+  return tableOfRows({ name: 'limits', title, ...head }, limitColumns, rows);
 }
 
-/** Posterior of the run's quantity on a grid; what it rests on stands in every row. */
-export function writePosteriorCsv(run: FinishedRun): string {
-  const { result, inputs, population } = run;
-  const range = statedRange(population);
-  const { value, density, cumulative } = result.answer.curve;
-  const same = (name: string, text: string | number | null): CsvColumn => ({
-    name,
-    values: value.map(() => text),
-  });
-  return writeCsv([
-    same('quantity', result.quantity),
-    { name: 'value', values: value },
-    { name: 'density', values: density },
-    { name: 'cumulative', values: cumulative },
-    same('credible_level', result.credibleLevel),
-    same('upper_limit', result.answer.limit),
-    same('rate_prior', priorText(run, result.quantity)),
-    same('mass_min', range.massMinMjup),
-    same('mass_max', range.massMaxMjup),
-    same('semi_major_axis_min', range.semiMajorAxisMinAu),
-    same('semi_major_axis_max', range.semiMajorAxisMaxAu),
-    same('population', `${inputs.population.key} version ${inputs.population.version}`),
-    same('n_targets', result.stars),
-    same('n_companions', countedDetections(run, false, result.quantity)),
-    same('counting_rule', countingRule(run, false, result.quantity)),
-    same('candidates', candidateWords(run, false)),
-    same('background', result.background),
-    same('prior_cut_at', result.priorCutAt),
-    same('combination', inputs.combination),
-    same('analysis', run.analysis),
-    same('run', run.number),
-    same('run_digest', run.resultDigest),
-    same('state', STATE),
-  ]);
+/** Posterior of the run's quantity on a grid. */
+export function posteriorTable(run: FinishedRun, head: Head): WrittenTable {
+  const { quantity, answer } = run.result;
+  const { value, density, cumulative } = answer.curve;
+  const rows = value.map((_, i) => ({
+    quantity,
+    value: value[i],
+    density: density[i],
+    cumulative: cumulative[i],
+  }));
+  const title = `Posterior of ${run.analysis}, run ${run.number}`;
+  return tableOfRows({ name: 'posterior', title, ...head }, posteriorColumns, rows);
 }
 
 const percent = (limit: number | null) =>
@@ -226,7 +226,7 @@ export function writeLimitsTable(run: FinishedRun, style: LatexStyle): string {
   const { result, inputs, population } = run;
   const found = countedDetections(run, false, 'companions_per_star');
   const table: LatexTable = {
-    caption: `Upper limits by credible level (${STATE}, ${run.analysis} run ${run.number})`,
+    caption: `Upper limits by credible level (${stateOf(run)}, ${run.analysis} run ${run.number})`,
     label: `tab:${run.analysis.toLowerCase()}-run-${run.number}`,
     columns: [
       { heading: 'Credible level', align: 'l' },
@@ -243,7 +243,9 @@ export function writeLimitsTable(run: FinishedRun, style: LatexStyle): string {
       percent(row.meanNumberZero),
     ]),
     notes: [
-      `${STATE[0].toUpperCase()}${STATE.slice(1)}, not frozen.`,
+      run.release
+        ? `${run.release.title}, version ${run.release.version}, ${run.release.licence}, ${run.release.address}.`
+        : `Draft, run ${run.number}: not frozen.`,
       `${describePopulation(population)}.`,
       `${result.stars} stars, ${found} companions counted (${countingRule(run, false, result.quantity)}).`,
       `Surveys: ${inputs.surveys.map(({ name }) => name).join(', ')}.`,

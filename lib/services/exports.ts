@@ -1,22 +1,25 @@
 import type { Actor } from '@/lib/access/actor';
-import { Conflict, NotFound } from '@/lib/errors';
-import type { LatexStyle } from '@/lib/formats';
+import { Conflict, InputError, NotFound } from '@/lib/errors';
+import { bytesOf, type WrittenBytes } from '@/lib/formats';
+import type { ExportList } from '@/lib/schemas/exports';
 import { runResultSchema } from '@/lib/schemas/runs';
 import { AnalysisRow, inTransaction, PopulationRow } from '@/models';
 import { recordAudit } from './audit';
+import { type FinishedRun, stateOf } from './export-limits';
 import {
-  type FinishedRun,
-  STATE,
-  writeLimitsCsv,
-  writeLimitsTable,
-  writePosteriorCsv,
-} from './export-limits';
+  type AskedOptions,
+  defaultOptions,
+  findRunExport,
+  runExports,
+  withDefaults,
+} from './exports/registry';
+import { readRunFacts } from './run-facts';
 import { findRun, getRun } from './runs';
 
 export interface ExportFile {
   fileName: string;
   contentType: string;
-  text: string;
+  content: WrittenBytes;
 }
 
 /** A finished run with its population; an unfinished one has nothing to export. */
@@ -28,9 +31,17 @@ export async function getFinishedRun(actor: Actor, id: string): Promise<Finished
   }
   const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });
   const population = await PopulationRow.findByPk(recipe.populationId, { rejectOnEmpty: true });
+  const facts = await readRunFacts([analysis.id]);
   return {
+    id: run.id,
+    collaborationId: run.collaborationId,
     analysis: `A-${analysis.number}`,
+    analysisName: analysis.name,
     number,
+    seed: run.seed,
+    finishedAt: run.finishedAt?.toISOString() ?? null,
+    inputsDigest: run.inputsDigest,
+    hasOlderInputs: facts.find((fact) => fact.id === run.id)?.hasOlderInputs ?? false,
     recipe,
     population: population.definition,
     inputs,
@@ -42,8 +53,10 @@ export async function getFinishedRun(actor: Actor, id: string): Promise<Finished
 }
 
 /** "A-31-run-18-limits.csv". */
-export const exportName = ({ analysis, number }: FinishedRun, file: string) =>
-  `${analysis}-run-${number}-${file}`;
+export const exportName = (
+  { analysis, number }: Pick<FinishedRun, 'analysis' | 'number'>,
+  file: string,
+) => `${analysis}-run-${number}-${file}`;
 
 /** Notes in the log that a file of a run went out. */
 export async function recordExport(actor: Actor, runId: string, fileName: string): Promise<void> {
@@ -52,30 +65,71 @@ export async function recordExport(actor: Actor, runId: string, fileName: string
   );
 }
 
-async function writeEverything(actor: Actor, id: string, run: FinishedRun): Promise<string> {
+const EVERYTHING = {
+  name: 'run.json',
+  group: 'words',
+  what: 'Everything: recipe, inputs, result, fingerprints',
+  format: 'JSON',
+  audience: 'programs',
+  mediaType: 'application/json',
+} as const;
+
+async function writeEverything(actor: Actor, id: string, run: FinishedRun): Promise<WrittenBytes> {
   const { job: _job, ...view } = await getRun(actor, id);
-  return `${JSON.stringify({ state: STATE, ...view, population: run.population }, null, 1)}\n`;
+  const everything = { state: stateOf(run), ...view, population: run.population };
+  return bytesOf(new TextEncoder().encode(`${JSON.stringify(everything, null, 1)}\n`));
 }
 
-/** One of the files that text alone makes; the figure is drawn by the route. */
+/** What a run offers, and what it cannot and why; sizes are known where no table has to be made. */
+export async function listExports(actor: Actor, id: string): Promise<ExportList> {
+  const run = await getFinishedRun(actor, id);
+  const files: ExportList['files'] = [];
+  for (const { make, ...file } of runExports) {
+    // The length of an archive of maps follows from its shape: none of them is read for it.
+    const size =
+      file.group === 'maps' && !file.name.endsWith('.json')
+        ? (await make(run, defaultOptions)).size
+        : null;
+    files.push({ ...file, byteLength: size });
+  }
+  return {
+    state: run.release ? stateOf(run) : `draft, run ${run.number}`,
+    files: [...files, { ...EVERYTHING, byteLength: null }],
+    missing: [
+      {
+        name: 'samples',
+        reason:
+          'This run draws no samples: its posterior is an integral. Take posterior.* instead.',
+      },
+    ],
+  };
+}
+
+/** One of a run's files; a drawing is made by the route. */
 export async function exportRun(
   actor: Actor,
   id: string,
   file: string,
-  style: LatexStyle = 'deluxetable',
+  options: AskedOptions = {},
 ): Promise<ExportFile> {
   const run = await getFinishedRun(actor, id);
-  const writers: Record<string, [contentType: string, write: () => string | Promise<string>]> = {
-    'limits.csv': ['text/csv; charset=utf-8', () => writeLimitsCsv(run)],
-    'posterior.csv': ['text/csv; charset=utf-8', () => writePosteriorCsv(run)],
-    'limits.tex': ['application/x-tex; charset=utf-8', () => writeLimitsTable(run, style)],
-    'run.json': ['application/json', () => writeEverything(actor, id, run)],
-  };
-  const found = Object.hasOwn(writers, file) ? writers[file] : undefined;
-  if (!found) throw new NotFound('export');
-  const [contentType, write] = found;
-  const text = await write();
+  const found = findRunExport(file);
+  if (!found && file !== EVERYTHING.name) throw new NotFound('export');
+  const content = await (found
+    ? found.make(run, withDefaults(options)).catch(asRefusal)
+    : writeEverything(actor, id, run));
   const fileName = exportName(run, file);
   await recordExport(actor, id, fileName);
-  return { fileName, contentType, text };
+  return { fileName, contentType: (found ?? EVERYTHING).mediaType, content };
+}
+
+/** What a container cannot hold is for the person to know. */
+export function asRefusal(error: unknown): never {
+  if (error instanceof RangeError) {
+    throw new InputError({
+      code: 'not-writable',
+      message: `This file cannot be made: ${error.message}`,
+    });
+  }
+  throw error;
 }

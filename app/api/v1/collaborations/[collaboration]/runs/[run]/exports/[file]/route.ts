@@ -1,36 +1,27 @@
 import { z } from 'zod';
+import { attachment } from '@/app/api/v1/attachment';
 import { collaborationRoute } from '@/app/api/v1/handler';
 import type { Actor } from '@/lib/access/actor';
-import {
-  type ExportFile,
-  exportName,
-  exportRun,
-  getFinishedRun,
-  recordExport,
-} from '@/lib/services/exports';
+import { exportQuerySchema } from '@/lib/schemas/exports';
+import { exportName, exportRun, getFinishedRun, recordExport } from '@/lib/services/exports';
 import { figureAsPdf } from '@/lib/services/figures';
 import { drawPosterior } from './posterior-drawing';
 
-const querySchema = z.strictObject({
-  /** Of the LaTeX table. */
-  style: z.enum(['deluxetable', 'tabular']).optional(),
+const querySchema = exportQuerySchema.extend({
   /** Of the figure, mm: one column or two. */
   width: z.enum(['88', '180']).default('88'),
 });
 
-/** Files of a finished run, as attachments: limits, posterior, everything, table, figure. */
+/** Files of a finished run, as attachments: tables, maps, words, everything, figures. */
 export const GET = collaborationRoute(
   { scope: 'read', query: querySchema },
   async ({ actor, params, query }) => {
-    const { fileName, contentType, content } = isFigure(params.file)
-      ? await drawFigure(actor, params.run, params.file, query.width === '180' ? 180 : 88)
-      : await exportRun(actor, params.run, params.file, query.style).then(asFile);
-    return new Response(content, {
-      headers: {
-        'Content-Type': contentType,
-        'Content-Disposition': `attachment; filename="${fileName}"`,
-      },
-    });
+    const { width, ...options } = query;
+    return attachment(
+      isFigure(params.file)
+        ? await drawFigure(actor, params.run, params.file, width === '180' ? 180 : 88)
+        : await exportRun(actor, params.run, params.file, options),
+    );
   },
 );
 
@@ -38,8 +29,6 @@ type Figure = 'posterior.svg' | 'posterior.pdf';
 
 const isFigure = (file: string): file is Figure =>
   file === 'posterior.svg' || file === 'posterior.pdf';
-
-const asFile = ({ text, ...file }: ExportFile) => ({ ...file, content: text });
 
 async function drawFigure(actor: Actor, runId: string, file: Figure, widthMm: 88 | 180) {
   const run = await getFinishedRun(actor, runId);
