@@ -254,5 +254,7 @@ function stateOf(
   if (analysis.state === 'failed') return { kind: 'bad', words: 'Failed' };
   if (run?.hasOlderInputs) return { kind: 'warn', words: 'Older inputs' };
   if (analysis.state === 'changed') return { kind: 'unsaved', words: 'Changed' };
+  if (run?.frozen === 'released') return { kind: 'released', words: 'Released' };
+  if (run?.frozen === 'frozen') return { kind: 'frozen', words: 'Frozen' };
   return { kind: 'draft', words: run ? 'Draft' : 'No run yet' };
 }

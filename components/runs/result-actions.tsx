@@ -113,6 +113,14 @@ export function ResultActions(props: ResultActionsProps) {
             </span>
           )}
           {run && !isFoot && <ExportMenu collaboration={collaboration} run={run} />}
+          {run && !isFoot && (
+            <LinkButton
+              href={`/${collaboration}/releases/freeze/${run.id}`}
+              icon={run.frozen === 'released' ? 'diamond' : 'lock'}
+            >
+              {run.frozen === null ? 'Freeze' : run.frozen === 'frozen' ? 'Frozen' : 'Released'}
+            </LinkButton>
+          )}
           {run && (!isFoot || needsRun(analysis, run)) && (
             <Button
               variant={needsRun(analysis, run) ? 'primary' : 'normal'}

@@ -14,6 +14,7 @@ export const mainSections: Section[] = [
   { label: 'Populations', path: 'populations', also: 'distribution indices cutoffs' },
   { label: 'Analyses', path: 'analyses', also: 'runs limits results' },
   { label: 'Forecasts', path: 'forecasts', also: 'planned survey' },
+  { label: 'Releases', path: 'releases', also: 'frozen runs, bundles, links for guests' },
 ];
 
 /** Behind "More". */

@@ -226,6 +226,8 @@ export const runSummarySchema = z.object({
   resultDigest: z.string().nullable(),
   /** A newer input exists than the one this run used. */
   hasOlderInputs: z.boolean(),
+  /** Kept for good with its inputs; `released` while a published release holds it. */
+  frozen: z.enum(['frozen', 'released']).nullable(),
   /** Shared surveys of this run that their owners take back, or have taken back. */
   withdrawn: z.array(withdrawnSurveySchema).optional(),
 });

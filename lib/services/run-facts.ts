@@ -23,6 +23,7 @@ interface Row {
   stars: number | null;
   resultDigest: string | null;
   hasOlderInputs: boolean;
+  frozen: RunSummary['frozen'];
   withdrawn: RunSummary['withdrawn'] | null;
 }
 
@@ -77,6 +78,11 @@ const FACTS = `
     jsonb_array_length(r.result->'counted') as detections,
     (r.result->>'stars')::int as stars, r.result_digest as "resultDigest",
     ${OLDER_INPUTS} as "hasOlderInputs",
+    (select case when exists (
+        select 1 from release_run q join release e on e.id = q.release_id
+        where q.run_id = r.id and e.published_at is not null and e.withdrawn_at is null)
+      then 'released' else 'frozen' end
+      from frozen_run z where z.run_id = r.id) as frozen,
     (select jsonb_agg(jsonb_build_object('survey', s.name, 'owner', x.owner_name,
         'from', x.withdrawn_from, 'why', x.withdrawn_why) order by s.position)
       from survey s join share x on x.id = s.share_id
