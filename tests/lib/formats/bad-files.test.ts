@@ -12,7 +12,7 @@ import {
 } from '@/lib/formats';
 
 import { withUnknownFilter } from './unknown-filter';
-import { zipOf } from './zip-of';
+import { gzippedZeros, zipOf } from './zip-of';
 
 const folder = path.resolve(import.meta.dirname, '../../fixtures/bad');
 
@@ -36,6 +36,7 @@ const made: Record<string, () => string | Uint8Array | Promise<Uint8Array>> = {
     `name,distance,age\n${Array.from({ length: 100_001 }, (_, i) => `RB ${i},20,100\n`).join('')}`,
   '154': withUnknownFilter,
   '142': () => zipOf([{ name: 'completeness.npy', unpackedBytes: 3 * 2 ** 30 }]),
+  '144': () => gzippedZeros(3 * 2 ** 30),
   '143': () =>
     zipOf(Array.from({ length: 20_000 }, (_, i) => ({ name: `${i}.npy`, unpackedBytes: 0 }))),
 };
@@ -130,10 +131,13 @@ describe('the list of odd and bad files', { timeout: 60_000 }, () => {
     expect(suggestions.map(placeOf)).toEqual([row.where]);
   });
 
-  it('stops a bomb early and small', { timeout: 20_000 }, async () => {
-    const bytes = zipOf([{ name: 'completeness.npy', unpackedBytes: 3 * 2 ** 30 }]);
+  it.each([
+    ['x.npz', () => zipOf([{ name: 'completeness.npy', unpackedBytes: 3 * 2 ** 30 }])],
+    ['x.csv.gz', () => gzippedZeros(3 * 2 ** 30)],
+  ])('stops the bomb %s early and small', { timeout: 20_000 }, async (fileName, make) => {
+    const bytes = make();
     const before = process.memoryUsage().rss;
-    const result = await readUploadedFile(bytes, { fileName: 'x.npz', kind: 'completeness-maps' });
+    const result = await readUploadedFile(bytes, { fileName, kind: 'completeness-maps' });
     expect(result.ok ? null : result.faults[0].code).toBe('too-large');
     expect(process.memoryUsage().rss - before).toBeLessThan(200 * 2 ** 20);
   });

@@ -41,3 +41,11 @@ export function zipOf(entries: { name: string; unpackedBytes: number }[]): Uint8
     Buffer.concat([...locals, directory, Buffer.from('PK\x05\x06', 'latin1'), end]),
   );
 }
+
+/** A gzip file of zeros, which states the length that it has; its checksum is reached by nobody. */
+export function gzippedZeros(unpackedBytes: number): Uint8Array {
+  const head = Buffer.from([0x1f, 0x8b, 8, 0, 0, 0, 0, 0, 0, 255]);
+  const end = Buffer.alloc(8);
+  end.writeUInt32LE(unpackedBytes % 2 ** 32, 4);
+  return new Uint8Array(Buffer.concat([head, deflatedZeros(unpackedBytes), end]));
+}
