@@ -47,8 +47,3 @@ export function retryJob(collaboration: string, id: string) {
     body: {},
   });
 }
-
-/** Address of a file made from a run; the browser itself follows it. */
-export function exportAddress(collaboration: string, runId: string, file: string): string {
-  return apiPath(collaboration, 'runs', runId, 'exports', file);
-}

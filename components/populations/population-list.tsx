@@ -1,6 +1,7 @@
 'use client';
 
 import Link from 'next/link';
+import { ExportButton } from '@/components/exports/export-button';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
@@ -33,7 +34,18 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
       <PageTitle
         title="Populations"
         context="How planets are spread in mass and semi-major axis; an analysis asks how many there are."
-        actions={populations.length > 0 && newButton}
+        actions={
+          populations.length > 0 && (
+            <>
+              <ExportButton
+                collaboration={collaboration}
+                source={['populations']}
+                title="Files of all populations"
+              />
+              {newButton}
+            </>
+          )
+        }
       />
       {populations.length === 0 ? (
         <EmptyState title="No population yet" actions={newButton}>

@@ -1,6 +1,7 @@
 'use client';
 
 import { useDeferredValue, useState } from 'react';
+import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createSample, useSamplePreview, useSamples } from '@/components/hooks/use-samples';
 import { Button } from '@/components/ui/button';
@@ -75,7 +76,19 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
             number={1}
             title="Which stars"
             context={open ? `${open.key}, version ${open.version}` : 'a new sample'}
-            tools={open && <TextAction onClick={() => show(undefined)}>New sample</TextAction>}
+            tools={
+              open && (
+                <>
+                  <ExportButton
+                    collaboration={collaboration}
+                    source={['samples', open.id]}
+                    title={`Files of ${open.key}, version ${open.version}`}
+                    look="text"
+                  />
+                  <TextAction onClick={() => show(undefined)}>New sample</TextAction>
+                </>
+              )
+            }
           />
           <SampleForm
             draft={draft}

@@ -2,6 +2,7 @@
 
 import { useRouter, useSearchParams } from 'next/navigation';
 import { useRef, useState } from 'react';
+import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
 import { SurveyMaps } from '@/components/maps/survey-maps';
@@ -23,6 +24,7 @@ import { CompanionTable } from './companion-table';
 import { MapJobLine } from './map-job-line';
 import { describeMapSettings } from './map-setting-words';
 import { MapSettingsDialog } from './map-settings-dialog';
+import { SurveyFactsDialog } from './survey-facts-dialog';
 import { observedYears } from './survey-table';
 import { TargetPanel } from './target-panel';
 import { TargetTable } from './target-table';
@@ -96,6 +98,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
   const [selectedId, setSelectedId] = useState(useSearchParams().get('target'));
   const [refusal, setRefusal] = useState<string | null>(null);
   const [isSetting, setSetting] = useState(false);
+  const [isChanging, setChanging] = useState(false);
   const panel = useRef<HTMLDivElement>(null);
   const selected =
     list.targets.find((target) => target.id === selectedId) ?? list.targets[0] ?? null;
@@ -130,6 +133,14 @@ export function SurveyScreen(props: SurveyScreenProps) {
             {survey.shared
               ? `shared by ${survey.shared.owner}`
               : `lead ${survey.lead?.name ?? 'nobody'}`}
+            {survey.can.change && (
+              <>
+                {' '}
+                <TextAction onClick={() => setChanging(true)}>
+                  Change<span className="sr-only"> name, band, years and description</span>
+                </TextAction>
+              </>
+            )}
             <span className="block text-ink3 text-note">
               Maps:{' '}
               {survey.shared?.scope === 'maps'
@@ -144,16 +155,25 @@ export function SurveyScreen(props: SurveyScreenProps) {
           </>
         }
         actions={
-          survey.can.import && (
-            <>
-              {survey.curves > 0 && survey.maps.ready < survey.targets && !isOpen && (
-                <Button onClick={() => void compute()}>Compute the missing maps</Button>
-              )}
-              <LinkButton href={importHref} variant="primary" icon="add">
-                Import files
-              </LinkButton>
-            </>
-          )
+          <>
+            {survey.targets > 0 && (
+              <ExportButton
+                collaboration={collaboration}
+                source={['surveys', survey.slug]}
+                title={`Files of ${survey.name}`}
+              />
+            )}
+            {survey.can.import && (
+              <>
+                {survey.curves > 0 && survey.maps.ready < survey.targets && !isOpen && (
+                  <Button onClick={() => void compute()}>Compute the missing maps</Button>
+                )}
+                <LinkButton href={importHref} variant="primary" icon="add">
+                  Import files
+                </LinkButton>
+              </>
+            )}
+          </>
         }
       />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
@@ -169,6 +189,13 @@ export function SurveyScreen(props: SurveyScreenProps) {
           }}
         />
       )}
+      <SurveyFactsDialog
+        collaboration={collaboration}
+        survey={survey}
+        isOpen={isChanging}
+        onClose={() => setChanging(false)}
+        onSaved={() => void mutate()}
+      />
       <MapSettingsDialog
         collaboration={collaboration}
         survey={survey}

@@ -149,14 +149,15 @@ test('a statistician takes a survey from its files to an upper limit', async ({
   });
 
   await test.step('the exported limits carry level, prior and the word draft', async () => {
-    await open(page, 'Export files of run 1');
+    await page.getByRole('button', { name: 'Export: files of run 1' }).click();
     const arriving = page.waitForEvent('download');
-    await page.getByRole('menuitem', { name: 'Limits by level, CSV' }).first().click();
+    await page.getByRole('link', { name: /^CSV, Limits and intervals/ }).click();
     const text = await readFile(await (await arriving).path(), 'utf8');
     expect(text).toContain('0.95');
     expect(text).toContain('uniform');
     expect(text).toContain('draft');
     expect(text).toContain('gannet');
+    await page.keyboard.press('Escape');
   });
 
   await test.step('signing out ends the session on the server too', async () => {

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
+import { ExportButton } from '@/components/exports/export-button';
 import { StarsScreen } from '@/components/stars/stars-screen';
 import { PageTitle } from '@/components/ui/page-title';
 import { listStars } from '@/lib/services/stars';
@@ -24,6 +25,15 @@ export default async function StarsPage({
         context={
           stars.counts.stars > 0 &&
           `${stars.counts.entries} entries, ${stars.counts.stars} stars, ${stars.counts.shared} of them in several surveys`
+        }
+        actions={
+          stars.counts.stars > 0 && (
+            <ExportButton
+              collaboration={actor.collaboration}
+              source={['stars']}
+              title="Files of all stars"
+            />
+          )
         }
       />
       <StarsScreen collaboration={actor.collaboration} initial={stars} surveys={surveys} />
