@@ -1,5 +1,4 @@
 import { InputError } from '@/lib/errors';
-import { hold } from '@/lib/queue/attempt';
 import { listFirst } from '@/lib/queue/preconditions';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import {
@@ -8,7 +7,7 @@ import {
   ENGINE_VERSION,
   type MapGrid,
 } from '@/lib/sensitivity';
-import { CompletenessMapRow, inTransaction } from '@/models';
+import type { CompletenessMapRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import { mapOfRow } from '@/models/map-on-grid';
 import { mapInputs } from '@/models/map-recipe';
@@ -16,7 +15,8 @@ import { buildStarInputs, type OwnCurve } from '@/models/star-inputs';
 import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import type { Work } from '../perform';
-import { type MapToStore, storeMaps } from './map-store';
+import { type MapShelf, tableShelf } from './map-shelf';
+import type { MapToStore } from './map-store';
 import type { Entry, Sample, SampleStar } from './run-sample';
 
 export type Rule = 'same-position' | 'deepest' | 'independent';
@@ -146,6 +146,7 @@ export async function combineMaps(
   asked: AnalysisRecipe['combination'],
   grid: MapGrid,
   onProgress: (done: number, total: number) => Promise<void>,
+  shelf: MapShelf = tableShelf(work),
 ): Promise<MapDigests> {
   const digests: MapDigests = new Map(
     sample.stars.map(({ starId, entries: [{ map }] }) => [starId, map.digest]),
@@ -157,23 +158,15 @@ export async function combineMaps(
     planCombination(star, ownRule(star) ?? ruleFor(star, asked), grid),
   );
   for (const { star, digest } of plans) digests.set(star.starId, digest);
-  const { collaborationId } = work.attempt;
-  const stored = await CompletenessMapRow.findAll({
-    attributes: ['digest'],
-    where: { collaborationId, digest: plans.map(({ digest }) => digest) },
-  });
-  const known = new Set(stored.map(({ digest }) => digest));
+  const known = await shelf.known(plans.map(({ digest }) => digest));
   const missing = plans.filter(({ digest }) => !known.has(digest));
   let done = plans.length - missing.length;
   await onProgress(done, plans.length);
   await inLanes(missing, work.pool.threads + 1, async (plan) => {
     const map = await (plan.rule === 'same-position'
       ? jointMap(work, plan, grid)
-      : combinedMap(plan));
-    await inTransaction(async (transaction) => {
-      await hold(transaction, work.attempt);
-      await storeMaps(collaborationId, [map], transaction);
-    });
+      : combinedMap(plan, shelf));
+    await shelf.keep(map);
     done++;
     await onProgress(done, plans.length);
   });
@@ -194,11 +187,12 @@ async function jointMap(work: Work, plan: Combination, grid: MapGrid): Promise<M
   return { ...grid, digest, inputs, ...answer };
 }
 
-async function combinedMap({ star, digest, inputs, rule }: Combination): Promise<MapToStore> {
-  const rows = await CompletenessMapRow.findAll({
-    where: { id: star.entries.map(({ map }) => map.id) },
-    order: [['digest', 'ASC']],
-  });
+async function combinedMap(
+  { star, digest, inputs, rule }: Combination,
+  shelf: MapShelf,
+): Promise<MapToStore> {
+  const rows = await shelf.read(star.entries.map(({ map }) => map.digest));
+  rows.sort((a, b) => (a.digest < b.digest ? -1 : a.digest > b.digest ? 1 : 0));
   return { ...combineRows(rows, rule), digest, inputs };
 }
 

@@ -2,7 +2,8 @@ import { marginalWeights, type Population, type PopulationWeights } from '@/lib/
 import type { RunInputs } from '@/lib/schemas/runs';
 import type { MapGrid } from '@/lib/sensitivity';
 import { valuesOnGrid } from '@/models/map-on-grid';
-import { type PassingMap, streamMaps } from '@/models/map-stream';
+import type { PassingMap } from '@/models/map-stream';
+import type { MapShelf } from './map-shelf';
 import { flaggedMasses, type MapDigests } from './run-maps';
 import type { SampleStar } from './run-sample';
 
@@ -29,7 +30,7 @@ export interface MapStack {
  * @param hostMassMsun shape [star] [M_Sun], where the population depends on it
  */
 export async function stackMaps(
-  collaborationId: string,
+  shelf: Pick<MapShelf, 'stream'>,
   sampleStars: SampleStar[],
   digests: MapDigests,
   grid: MapGrid,
@@ -42,7 +43,7 @@ export async function stackMaps(
   const share = shareCounter(population, grid);
   const reach = reachOf(grid);
   const keys = sampleStars.map(({ starId }) => digests.get(starId) as string);
-  await streamMaps(collaborationId, { by: 'digest', keys }, (map, place) => {
+  await shelf.stream(keys, (map, place) => {
     const star = sampleStars[place];
     maps.set(valuesOnGrid(map, grid), place * size);
     narrow(reach, map);
