@@ -12,6 +12,9 @@ import { CompanionVerdictRow, defineCompanionVerdict } from './companion-verdict
 import { CompletenessMapRow, defineCompletenessMap } from './completeness-map';
 import { ContrastCurveRow, defineContrastCurve } from './contrast-curve';
 import { CoolingTableRow, defineCoolingTable } from './cooling-table';
+import { defineExercise, ExerciseRow } from './exercise';
+import { defineExerciseStart, ExerciseStartRow } from './exercise-start';
+import { defineExerciseSubmission, ExerciseSubmissionRow } from './exercise-submission';
 import { BundleImportRow, defineFrozenRun, FrozenRunRow } from './frozen-run';
 import { defineGuestLink, GuestLinkRow, GuestNoteRow } from './guest-link';
 import { defineInvitation, InvitationRow } from './invitation';
@@ -50,6 +53,9 @@ export {
   CompletenessMapRow,
   ContrastCurveRow,
   CoolingTableRow,
+  ExerciseRow,
+  ExerciseStartRow,
+  ExerciseSubmissionRow,
   FrozenRunRow,
   GuestLinkRow,
   GuestNoteRow,
@@ -133,6 +139,9 @@ function defineModels(sequelize: Sequelize): void {
   defineCombination(sequelize);
   defineRun(sequelize);
   defineStudy(sequelize);
+  defineExercise(sequelize);
+  defineExerciseStart(sequelize);
+  defineExerciseSubmission(sequelize);
   defineFrozenRun(sequelize);
   defineRelease(sequelize);
   defineGuestLink(sequelize);

@@ -55,6 +55,16 @@ export const permissions = {
     ['own', 'own', 'yes', 'yes', 'yes'],
     'Ask the person who made it',
   ),
+  'make-exercise': row(
+    'set an exercise and read what everybody handed in',
+    ['no', 'no', 'yes', 'yes', 'yes'],
+    'Ask a statistician, an author or an owner to set it',
+  ),
+  'submit-exercise': row(
+    'begin an exercise and hand in a run of your own',
+    ['yes', 'yes', 'yes', 'yes', 'yes'],
+    'Ask an owner of the collaboration to invite you',
+  ),
   'create-survey': row(
     'create a survey and lead it',
     ['no', 'yes', 'no', 'no', 'yes'],

@@ -181,32 +181,36 @@ async function nextNumber(collaborationId: string, transaction: Transaction): Pr
   return (last ?? 0) + 1;
 }
 
-async function addAnalysis(
+interface NewAnalysis {
+  name: string;
+  recipe: AnalysisRecipe;
+  parent: AnalysisRow | null;
+}
+
+/** A new analysis with its number, as a part of whatever else the transaction does. */
+export async function addAnalysisIn(
   actor: Actor,
-  fields: { name: string; recipe: AnalysisRecipe; parent: AnalysisRow | null },
-): Promise<AnalysisView> {
-  const row = await inTransaction(async (transaction) => {
-    await checkRecipe(actor, fields.recipe, transaction);
-    const number = await nextNumber(actor.collaborationId, transaction);
-    const created = await AnalysisRow.create(
-      {
-        collaborationId: actor.collaborationId,
-        number,
-        name: fields.name,
-        recipe: fields.recipe,
-        parentId: fields.parent?.id ?? null,
-        createdBy: actor.personId,
-      },
-      { transaction },
-    );
-    const item = { kind: 'analysis', id: created.id };
-    const action = fields.parent ? 'copy-analysis' : 'save-analysis';
-    const summary = fields.parent
-      ? `copied A-${fields.parent.number} to A-${number}`
-      : `began the analysis A-${number}`;
-    await recordAudit(actor, action, item, summary, transaction);
-    return created;
-  });
+  { name, recipe, parent }: NewAnalysis,
+  transaction: Transaction,
+): Promise<AnalysisRow> {
+  const { collaborationId, personId: createdBy } = actor;
+  await checkRecipe(actor, recipe, transaction);
+  const number = await nextNumber(collaborationId, transaction);
+  const created = await AnalysisRow.create(
+    { collaborationId, number, name, recipe, parentId: parent?.id ?? null, createdBy },
+    { transaction },
+  );
+  const item = { kind: 'analysis', id: created.id };
+  const action = parent ? 'copy-analysis' : 'save-analysis';
+  const summary = parent
+    ? `copied A-${parent.number} to A-${number}`
+    : `began the analysis A-${number}`;
+  await recordAudit(actor, action, item, summary, transaction);
+  return created;
+}
+
+async function addAnalysis(actor: Actor, fields: NewAnalysis): Promise<AnalysisView> {
+  const row = await inTransaction((transaction) => addAnalysisIn(actor, fields, transaction));
   const [view] = await describeAnalyses(actor, [row]);
   return view;
 }
