@@ -4,12 +4,13 @@ import { mkdir, open, rm } from 'node:fs/promises';
 import path from 'node:path';
 import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
+import { escapeLiteral } from 'pg';
 import type { Transaction } from 'sequelize';
-import { QueryTypes } from 'sequelize';
 import { config } from '@/lib/config';
 import { InputError } from '@/lib/errors';
 import { uploadLimits } from '@/lib/formats';
 import { database } from '@/models';
+import { copyRows } from '@/models/copy-rows';
 
 /** Parts of this size keep memory flat, however large the file is. */
 const PART_BYTES = 1 << 20;
@@ -143,11 +144,20 @@ export async function storeParts(
   }
 }
 
-/** The original bytes of an upload. */
-export async function loadParts(uploadId: string): Promise<Buffer> {
-  const rows = await database().query<{ bytes: Buffer }>(
-    'select bytes from upload_part where upload_id = $1 order by part_number',
-    { bind: [uploadId], type: QueryTypes.SELECT },
-  );
-  return Buffer.concat(rows.map((row) => row.bytes));
+/** The original bytes of an upload, in a buffer that is theirs alone. */
+export async function loadParts({
+  id,
+  byteLength,
+}: {
+  id: string;
+  byteLength: number | string;
+}): Promise<Buffer<ArrayBuffer>> {
+  const bytes = Buffer.from(new ArrayBuffer(Number(byteLength)));
+  let at = 0;
+  const query = `select bytes from upload_part where upload_id = ${escapeLiteral(id)} order by part_number`;
+  await copyRows(query, ([part]) => {
+    if (part) at += part.copy(bytes, at);
+  });
+  if (at !== bytes.length) throw new Error(`upload ${id} has ${at} of its ${bytes.length} bytes`);
+  return bytes;
 }

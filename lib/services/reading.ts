@@ -7,14 +7,19 @@ import type { ReadContext, ReadResult } from '@/lib/formats';
 /** formats: a file is read within 60 s and 1 GiB, or refused. */
 const LONGEST_MS = 60_000;
 const MOST_MEGABYTES = 1024;
+const THREADS = 2;
 
-const holder = globalThis as typeof globalThis & { rareboundReaders?: Piscina };
+const holder = globalThis as typeof globalThis & {
+  rareboundReaders?: Piscina;
+  /** Settles with each file that is being read. */
+  rareboundReading?: Set<Promise<void>>;
+};
 
 function readers(): Piscina {
   holder.rareboundReaders ??= new Piscina({
     filename: path.resolve(config().bundleDirectory, 'workers/compute/read-upload.js'),
     minThreads: 0,
-    maxThreads: 2,
+    maxThreads: THREADS,
     idleTimeout: 30_000,
     resourceLimits: { maxOldGenerationSizeMb: MOST_MEGABYTES },
   });
@@ -27,14 +32,41 @@ export async function closeReaders(): Promise<void> {
   holder.rareboundReaders = undefined;
 }
 
+/** Brings the bytes of a file, anew at each call: they move to the thread that reads them. */
+export type LoadBytes = () => Promise<Uint8Array>;
+
+/** Files that wait for a thread wait on the disk, not in memory. */
+async function withThread<Answer>(work: () => Promise<Answer>): Promise<Answer> {
+  while (holder.rareboundReading && holder.rareboundReading.size >= THREADS) {
+    await Promise.race(holder.rareboundReading);
+  }
+  holder.rareboundReading ??= new Set();
+  const running = work();
+  const ended = running.then(
+    () => undefined,
+    () => undefined,
+  );
+  holder.rareboundReading.add(ended);
+  try {
+    return await running;
+  } finally {
+    holder.rareboundReading.delete(ended);
+  }
+}
+
 /** Reads a file on a thread of its own, so that a large or hostile one cannot hold up the pages. */
-export async function readOnThread(bytes: Buffer, context: ReadContext): Promise<ReadResult> {
-  const own = new Uint8Array(bytes);
+export function readOnThread(load: LoadBytes, context: ReadContext): Promise<ReadResult> {
+  return withThread(async () => readBytes(await load(), context));
+}
+
+async function readBytes(bytes: Uint8Array, context: ReadContext): Promise<ReadResult> {
+  const isWhole = bytes.byteLength === bytes.buffer.byteLength;
+  const own = isWhole ? bytes : new Uint8Array(bytes);
   const limit = AbortSignal.timeout(LONGEST_MS);
   try {
     return (await readers().run(
       { bytes: own, context },
-      { signal: limit, transferList: [own.buffer] },
+      { signal: limit, transferList: [own.buffer as ArrayBuffer] },
     )) as ReadResult;
   } catch (error) {
     if (limit.aborted) {

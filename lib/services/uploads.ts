@@ -124,7 +124,7 @@ export async function receiveUpload(
   };
   const file: IncomingFile = await receiveFile(request);
   try {
-    const { report, settings } = await dryRun(actor, source, await readFile(file.path));
+    const { report, settings } = await dryRun(actor, source, () => readFile(file.path));
     const row = await inTransaction((transaction) =>
       keepFile(actor, { ...source, settings }, file, report, transaction),
     );
@@ -204,7 +204,7 @@ export async function listUploads(
 /** The original bytes, as they came. */
 export async function getUploadBytes(actor: Actor, id: string) {
   const { row } = await findUpload(actor, id);
-  return { bytes: await loadParts(row.id), fileName: row.fileName, sha256: row.sha256 };
+  return { bytes: await loadParts(row), fileName: row.fileName, sha256: row.sha256 };
 }
 
 export function demandImport(actor: Actor, { kind }: UploadRow, survey: SurveyRow | null): void {
@@ -224,7 +224,7 @@ export async function changeUpload(
   if (row.state !== 'read')
     throw new Conflict('This file is stored already; upload it again to change how it is read');
   const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
-  const read = await dryRun(actor, source, await loadParts(row.id));
+  const read = await dryRun(actor, source, () => loadParts(row));
   const { report } = read;
   await row.update({
     settings: read.settings,
@@ -246,7 +246,7 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
     survey,
     settings: row.settings as UploadSettings,
   };
-  const { plan, report } = await dryRun(actor, source, await loadParts(row.id));
+  const { plan, report } = await dryRun(actor, source, () => loadParts(row));
   try {
     await inTransaction(async (transaction) => {
       const [claimed] = await UploadRow.update(

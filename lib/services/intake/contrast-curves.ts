@@ -2,7 +2,7 @@ import type { Fault } from '@/lib/errors';
 import type { CurveRecord, Note } from '@/lib/formats';
 import { CompletenessMapRow, ContrastCurveRow, TargetRow } from '@/models';
 import { canonicalJson, sha256Hex } from '@/models/digest';
-import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
+import { inParts, type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 import { TargetNames } from './target-names';
 
 const digestOf = (record: CurveRecord) =>
@@ -102,23 +102,21 @@ export async function planContrastCurves(
         { replacedAt: new Date() },
         { where: { id: replacedIds }, transaction },
       );
-      await ContrastCurveRow.bulkCreate(
-        steps.map(({ record, target, digest }) => ({
-          collaborationId: survey.collaborationId,
-          targetId: target.id,
-          uploadId,
-          band: record.band,
-          epoch: record.epoch,
-          nSigma: record.nSigma,
-          separationArcsec: record.separationArcsec,
-          contrastMag: record.contrastMag,
-          coverage: record.coverage,
-          instrument: record.instrument,
-          reference: record.reference,
-          digest,
-        })),
-        { transaction },
-      );
+      const rows = steps.map(({ record, target, digest }) => ({
+        collaborationId: survey.collaborationId,
+        targetId: target.id,
+        uploadId,
+        band: record.band,
+        epoch: record.epoch,
+        nSigma: record.nSigma,
+        separationArcsec: record.separationArcsec,
+        contrastMag: record.contrastMag,
+        coverage: record.coverage,
+        instrument: record.instrument,
+        reference: record.reference,
+        digest,
+      }));
+      await inParts(rows, (part) => ContrastCurveRow.bulkCreate(part, { transaction }));
       await TargetRow.update(
         { mapState: 'waiting', mapFault: null },
         { where: { id: steps.map((step) => step.target.id) }, transaction },

@@ -45,3 +45,16 @@ export function summariseItems(items: PlannedItem[], noun: string): string {
   });
   return `${countOf(items.length, noun)}: ${parts.join(', ') || 'nothing'}`;
 }
+
+/** Rows of one statement: thousands one by one would hold the process up for many seconds. */
+const ROWS_AT_ONCE = 500;
+
+/** Writes many rows in statements of a bearable length. */
+export async function inParts<Item>(
+  items: Item[],
+  write: (part: Item[]) => Promise<unknown>,
+): Promise<void> {
+  for (let from = 0; from < items.length; from += ROWS_AT_ONCE) {
+    await write(items.slice(from, from + ROWS_AT_ONCE));
+  }
+}

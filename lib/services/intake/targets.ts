@@ -1,59 +1,13 @@
 import { Op } from 'sequelize';
 import type { Fault } from '@/lib/errors';
 import { foldName, type TargetRecord } from '@/lib/formats';
-import { ContrastCurveRow, StarRow, TargetRow } from '@/models';
+import { ContrastCurveRow, TargetRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
 import { proposeMatches } from '../star-sky';
-import { type FoundStar, KnownStars, noteJoined } from './known-stars';
+import { KnownStars } from './known-stars';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
-
-/** Columns of the target table that a file states; everything else goes into `attributes`. */
-function fieldsOf(record: TargetRecord, before?: TargetRow) {
-  const { line, otherNames, ...rest } = record;
-  return {
-    name: record.name,
-    foldedName: foldName(record.name),
-    otherNames,
-    gaiaDr3Id: record.gaiaDr3Id,
-    raDeg: record.raDeg,
-    decDeg: record.decDeg,
-    distancePc: record.distancePc,
-    distanceErrorPc: record.distanceErrorPc,
-    parallaxMas: record.parallaxMas,
-    parallaxErrorMas: record.parallaxErrorMas,
-    ageMyr: record.ageMyr,
-    ageLowerMyr: record.ageLowerMyr,
-    ageUpperMyr: record.ageUpperMyr,
-    ageMinMyr: record.ageMinMyr,
-    ageMaxMyr: record.ageMaxMyr,
-    hostMassMsun: record.hostMassMsun,
-    spectralType: record.spectralType,
-    movingGroup: record.movingGroup,
-    magnitudes: record.magnitudes,
-    attributes: {
-      refEpoch: rest.refEpoch,
-      pmRaMasYr: rest.pmRaMasYr,
-      pmDecMasYr: rest.pmDecMasYr,
-      hostMassErrorMsun: rest.hostMassErrorMsun,
-      membershipProbability: rest.membershipProbability,
-      multiplicity: rest.multiplicity,
-      binarySemiMajorAxisAu: rest.binarySemiMajorAxisAu,
-      binaryEccentricity: rest.binaryEccentricity,
-      binaryMassRatio: rest.binaryMassRatio,
-      debrisDisk: rest.debrisDisk,
-      ...markOf(record, before),
-      notes: rest.notes,
-      reference: rest.reference,
-    },
-  };
-}
-type TargetFields = ReturnType<typeof fieldsOf>;
-
-/** A file that says nothing of it leaves a person's mark as it is. */
-function markOf({ selectedForCompanion }: TargetRecord, before?: TargetRow) {
-  const mark = selectedForCompanion ?? before?.attributes.selectedForCompanion;
-  return typeof mark === 'boolean' ? { selectedForCompanion: mark } : {};
-}
+import { storeTargets } from './store-targets';
+import { fieldsOf, type TargetFields, type TargetStep } from './target-fields';
 
 const isUnchanged = (row: TargetRow, fields: TargetFields) =>
   (Object.keys(fields) as (keyof TargetFields)[]).every(
@@ -69,15 +23,6 @@ function describeRecord(record: TargetRecord): string {
   return parts.join(', ');
 }
 
-interface Step {
-  record: TargetRecord;
-  target: TargetRow | undefined;
-  star: StarRow | undefined;
-  /** How a star that was known from elsewhere was found. */
-  found: FoundStar | undefined;
-  isUnchanged: boolean;
-}
-
 /** Matches each line to a known target and star; a star counts once, so it may not enter a survey twice. */
 export async function planTargets(context: PlanContext, records: TargetRecord[]): Promise<Plan> {
   const { survey } = context;
@@ -89,7 +34,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
   const byStar = new Map(targets.map((row) => [row.starId, row]));
   const items: PlannedItem[] = [];
   const faults: Fault[] = [];
-  const steps: Step[] = [];
+  const steps: TargetStep[] = [];
   const claimed = new Map<string, TargetRecord>();
   for (const record of records) {
     const own = byName.get(foldName(record.name));
@@ -129,38 +74,7 @@ export async function planTargets(context: PlanContext, records: TargetRecord[])
     summary: summariseItems(items, 'target'),
     needsMaps: changed.some((step) => step.target !== undefined),
     apply: async (transaction, uploadId) => {
-      for (const { record, target, star, found } of changed) {
-        const fields = fieldsOf(record, target);
-        const owner =
-          star ??
-          (await StarRow.create(
-            {
-              collaborationId: survey.collaborationId,
-              name: record.name,
-              foldedName: fields.foldedName,
-              gaiaDr3Id: record.gaiaDr3Id,
-            },
-            { transaction },
-          ));
-        if (owner.gaiaDr3Id === null && record.gaiaDr3Id && !known.ofGaia(record.gaiaDr3Id)) {
-          await owner.update({ gaiaDr3Id: record.gaiaDr3Id }, { transaction });
-        }
-        if (target) await target.update({ ...fields, uploadId }, { transaction });
-        else {
-          const created = await TargetRow.create(
-            {
-              ...fields,
-              collaborationId: survey.collaborationId,
-              surveyId: survey.id,
-              starId: owner.id,
-              starEvidence: found?.evidence ?? null,
-              uploadId,
-            },
-            { transaction },
-          );
-          if (found?.through) await noteJoined(created.id, found.through, transaction);
-        }
-      }
+      await storeTargets({ context, known, steps: changed, uploadId }, transaction);
       await proposeMatches(survey.collaborationId, transaction);
       const replaced = changed.flatMap((step) => (step.target ? [step.target.id] : []));
       const curves = await ContrastCurveRow.findAll({

@@ -4,7 +4,7 @@ import { getUploadBytes } from '@/lib/services/uploads';
 /** The original bytes, always as an attachment. */
 export const GET = collaborationRoute({ scope: 'read' }, async ({ actor, params }) => {
   const { bytes, fileName, sha256 } = await getUploadBytes(actor, params.upload);
-  return new Response(new Uint8Array(bytes), {
+  return new Response(bytes, {
     headers: {
       'Content-Type': 'application/octet-stream',
       'Content-Disposition': `attachment; filename*=UTF-8''${encodeURIComponent(fileName)}`,

@@ -1,0 +1,55 @@
+import { existsSync, readFileSync } from 'node:fs';
+import path from 'node:path';
+import { type Browser, chromium, type Page } from '@playwright/test';
+import type { RunningProduct } from './row';
+
+const EXECUTABLE = '/usr/bin/chromium';
+const PATIENCE_MS = 120_000;
+
+/** A browser with one page of the product, signed in through its form. */
+export async function openLaboratory(
+  product: RunningProduct,
+  role: string,
+): Promise<{ browser: Browser; page: Page; faults: string[] }> {
+  if (!existsSync(EXECUTABLE)) throw new Error(`${EXECUTABLE} is missing; this row needs it`);
+  const file = path.join(product.folder, 'demo-sign-ins.json');
+  const all: { role: string; email: string; password: string }[] = JSON.parse(
+    readFileSync(file, 'utf8'),
+  );
+  const person = all.find((one) => one.role === role);
+  if (!person) throw new Error(`the seed wrote no sign-in of a ${role}`);
+  const browser = await chromium.launch({
+    executablePath: EXECUTABLE,
+    args: ['--no-sandbox', '--disable-gpu', '--disable-background-networking', '--disable-sync'],
+  });
+  const context = await browser.newContext({
+    baseURL: product.address,
+    viewport: { width: 1440, height: 900 },
+  });
+  context.setDefaultTimeout(PATIENCE_MS);
+  const page = await context.newPage();
+  const faults: string[] = [];
+  page.on('pageerror', (error) => faults.push(error.message));
+  await page.goto('/sign-in');
+  await page.getByLabel('E-mail').fill(person.email);
+  await page.getByLabel('Password', { exact: true }).fill(person.password);
+  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.waitForURL('**/breakwater');
+  return { browser, page, faults };
+}
+
+/** Drags a file over the page's drop zone and lets it go, as a person's hand does. */
+export async function dropFile(page: Page, name: string, text: string): Promise<void> {
+  const carried = await page.evaluateHandle(
+    ([fileName, content]) => {
+      const transfer = new DataTransfer();
+      transfer.items.add(new File([content], fileName, { type: 'text/csv' }));
+      return transfer;
+    },
+    [name, text],
+  );
+  const zone = page.getByText(/^Drop files of/).first();
+  for (const type of ['dragenter', 'dragover', 'drop']) {
+    await zone.dispatchEvent(type, { dataTransfer: carried });
+  }
+}
