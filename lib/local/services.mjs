@@ -76,10 +76,12 @@ export function workerService({ bundleFolder, environment }) {
 /** @returns {Service} */
 export function webService({ distFolder, environment, port, isDevelopment }) {
   const words = isDevelopment ? ['dev'] : ['start'];
+  // In a container the proxy comes from outside; anywhere else nobody but this machine may ask.
+  const host = process.env.RAREBOUND_HOST || '127.0.0.1';
   return {
     name: 'web',
     command: process.execPath,
-    args: [nextProgram, ...words, '-H', '127.0.0.1', '-p', String(port)],
+    args: [nextProgram, ...words, '-H', host, '-p', String(port)],
     cwd: root,
     env: () => ({ ...environment(), ...nextEnvironment(distFolder) }),
     isReady: () => answers(`http://127.0.0.1:${port}/api/health`),
