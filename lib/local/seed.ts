@@ -24,6 +24,7 @@ import { companionsOf } from './demo/companions';
 import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
 import { addNeighbours, memberOf, NEIGHBOURS } from './demo/neighbours';
 import { demoPeople, makePassword } from './demo/people';
+import { releaseLead } from './demo/release';
 import { type DemoSurvey, demoSurveys, drawSky } from './demo/sky';
 import { addLaterEpochs, bringIn } from './demo/store';
 
@@ -233,6 +234,15 @@ async function seedBreakwater(): Promise<void> {
   const { leadAnalysisId } = await askQuestions({
     actors: { statistician: actorOf('linhart'), student: actorOf('hadley') },
     surveyIds: ids as never,
+    finish: finishJob,
+  });
+  await releaseLead({
+    actors: {
+      author: actorOf('castellan'),
+      statistician: actorOf('linhart'),
+      owner: actorOf('marrand'),
+    },
+    analysisId: leadAnalysisId,
     finish: finishJob,
   });
   const { token } = await createToken(actorOf('linhart'), {
