@@ -2,20 +2,14 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import {
-  invite,
-  resendInvitation,
-  revokeInvitation,
-  useInvitations,
-} from '@/components/hooks/use-people';
-import { Button } from '@/components/ui/button';
+import { resendInvitation, revokeInvitation, useInvitations } from '@/components/hooks/use-people';
 import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
-import { TextField } from '@/components/ui/text-field';
 import type { Role } from '@/lib/schemas/common';
 import type { InvitationView } from '@/lib/schemas/people';
-import { RoleFields, roleWords } from './role-fields';
+import { InviteForm } from './invite-form';
+import { roleWords } from './role-fields';
 
 interface InvitationPanelProps {
   collaboration: string;
@@ -37,55 +31,31 @@ function mailWords(mail: InvitationView['mail']) {
 /** Invites by e-mail, and shows what became of earlier invitations. */
 export function InvitationPanel({ collaboration, initial, offered }: InvitationPanelProps) {
   const { data: invitations = initial, mutate } = useInvitations(collaboration, initial);
-  const [email, setEmail] = useState('');
-  const [roles, setRoles] = useState<Role[]>(['student']);
   const [refusal, setRefusal] = useState<string | null>(null);
   const [sentTo, setSentTo] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
   const attempt = async (work: () => Promise<unknown>, sent: string | null) => {
-    setBusy(true);
     setRefusal(null);
     setSentTo(null);
     try {
       await work();
       setSentTo(sent);
-      if (sent !== null) setEmail('');
       await mutate();
     } catch (reason) {
       setRefusal(sentenceOf(reason));
     }
-    setBusy(false);
   };
   return (
     <div className="flex flex-col gap-6">
       {offered.length > 0 && (
-        <form
-          className="flex max-w-[440px] flex-col gap-4"
-          onSubmit={(event) => {
-            event.preventDefault();
-            void attempt(() => invite(collaboration, email, roles), email);
+        <InviteForm
+          collaboration={collaboration}
+          offered={offered}
+          onInvited={(email) => {
+            setRefusal(null);
+            setSentTo(email);
+            void mutate();
           }}
-        >
-          <TextField
-            label="E-mail of a colleague"
-            type="email"
-            required
-            value={email}
-            onChange={(event) => setEmail(event.target.value)}
-          />
-          <RoleFields legend="Invite as" roles={roles} onChange={setRoles} offered={offered} />
-          <div>
-            <Button
-              type="submit"
-              variant="primary"
-              icon="mail"
-              isBusy={isBusy}
-              disabledReason={roles.length === 0 ? 'Choose at least one role' : undefined}
-            >
-              Invite
-            </Button>
-          </div>
-        </form>
+        />
       )}
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       {sentTo !== null && (

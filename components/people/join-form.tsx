@@ -4,11 +4,12 @@ import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { acceptOffer, startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
+import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
-import type { InvitationOffer } from '@/lib/schemas/people';
+import { type InvitationOffer, signUpSchema } from '@/lib/schemas/people';
 
 interface JoinFormProps {
   code: string;
@@ -21,26 +22,21 @@ interface JoinFormProps {
 export function JoinForm({ code, offer, signedInAs }: JoinFormProps) {
   const [refusal, setRefusal] = useState<string | null>(null);
   const [isBusy, setBusy] = useState(false);
-  const accept = async (account?: { name: string; password: string }) => {
+  const accept = async () => {
     setBusy(true);
     setRefusal(null);
     try {
-      const { slug } = await acceptOffer(code, account);
-      if (account) {
-        const sentence = await startSession(offer.email, account.password);
-        if (sentence !== null) throw new Error(sentence);
-      }
+      const { slug } = await acceptOffer(code);
       window.location.assign(`/${slug}`);
     } catch (reason) {
       setRefusal(sentenceOf(reason));
       setBusy(false);
     }
   };
-  const refused = refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />;
   if (signedInAs === offer.email) {
     return (
       <div className="flex flex-col gap-4">
-        {refused}
+        {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
         <Button variant="primary" isWide isBusy={isBusy} onClick={() => void accept()}>
           Join {offer.collaboration}
         </Button>
@@ -64,27 +60,36 @@ export function JoinForm({ code, offer, signedInAs }: JoinFormProps) {
       </div>
     );
   }
+  return <NewAccount offer={offer} code={code} />;
+}
+
+/** For somebody without an account: the address is the one that was invited. */
+function NewAccount({ code, offer }: { code: string; offer: InvitationOffer }) {
+  const { field, submit, refusal, isBusy } = useSchemaForm(
+    signUpSchema.pick({ name: true, password: true }),
+    { name: '', password: '' },
+  );
   return (
     <form
+      noValidate
       className="flex flex-col gap-4"
-      onSubmit={(event) => {
-        event.preventDefault();
-        const form = new FormData(event.currentTarget);
-        void accept({ name: String(form.get('name')), password: String(form.get('password')) });
-      }}
+      onSubmit={submit(async (account) => {
+        const { slug } = await acceptOffer(code, account);
+        const sentence = await startSession(offer.email, account.password);
+        if (sentence !== null) throw new Error(sentence);
+        window.location.assign(`/${slug}`);
+      })}
     >
-      <TextField label="Name" name="name" autoComplete="name" required maxLength={100} />
+      <TextField label="Name" autoComplete="name" required {...field('name')} />
       <TextField label="E-mail" value={offer.email} readOnly autoComplete="username" />
       <PasswordField
         label="Password"
-        name="password"
         autoComplete="new-password"
         hint="At least 15 characters; four or five words that do not belong together do well."
         required
-        minLength={15}
-        maxLength={128}
+        {...field('password')}
       />
-      {refused}
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Make the account and join
       </Button>

@@ -1,37 +1,37 @@
 'use client';
 
 import Link from 'next/link';
-import { useState } from 'react';
 import { startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
+import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
+import { signInSchema } from '@/lib/schemas/people';
 
 /** E-mail and password; on success the browser goes to `next`, an address of this site. */
 export function SignInForm({ next }: { next: string }) {
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
-  const submit = async (form: FormData) => {
-    setBusy(true);
-    setRefusal(null);
-    const sentence = await startSession(String(form.get('email')), String(form.get('password')));
-    if (sentence === null) window.location.assign(next);
-    else {
-      setRefusal(sentence);
-      setBusy(false);
-    }
-  };
+  const { field, submit, refusal, setRefusal, isBusy } = useSchemaForm(signInSchema, {
+    email: '',
+    password: '',
+  });
   return (
     <form
+      noValidate
       className="flex flex-col gap-4"
-      onSubmit={(event) => {
-        event.preventDefault();
-        void submit(new FormData(event.currentTarget));
-      }}
+      onSubmit={submit(async ({ email, password }) => {
+        const sentence = await startSession(email, password);
+        if (sentence === null) window.location.assign(next);
+        else setRefusal(sentence);
+      })}
     >
-      <TextField label="E-mail" name="email" type="email" autoComplete="username" required />
-      <PasswordField label="Password" name="password" autoComplete="current-password" required />
+      <TextField label="E-mail" type="email" autoComplete="username" required {...field('email')} />
+      <PasswordField
+        label="Password"
+        autoComplete="current-password"
+        required
+        {...field('password')}
+      />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Sign in

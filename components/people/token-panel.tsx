@@ -2,16 +2,14 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { createToken, revokeToken, useTokens } from '@/components/hooks/use-people';
-import { Button } from '@/components/ui/button';
-import { CheckboxField } from '@/components/ui/checkbox-field';
+import { revokeToken, useTokens } from '@/components/hooks/use-people';
 import { Notice } from '@/components/ui/notice';
-import { NumberField } from '@/components/ui/number-field';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
-import { TextField } from '@/components/ui/text-field';
+import { announce } from '@/components/ui/toast-store';
 import type { TokenView } from '@/lib/schemas/people';
+import { TokenForm } from './token-form';
 
 const dayOf = (moment: string | null) =>
   moment === null
@@ -22,12 +20,6 @@ const dayOf = (moment: string | null) =>
         year: 'numeric',
         timeZone: 'UTC',
       });
-
-const scopes = [
-  { value: 'read', label: 'read', hint: 'surveys, maps, populations, analyses, results' },
-  { value: 'write', label: 'write', hint: 'surveys, files, populations, analyses' },
-  { value: 'run', label: 'run', hint: 'start maps and runs' },
-];
 
 /** Tokens of this person for scripts; a new one is shown once. */
 export function TokenPanel({
@@ -41,8 +33,6 @@ export function TokenPanel({
   initial: TokenView[];
 }) {
   const { data: tokens = initial, mutate } = useTokens(collaboration, initial);
-  const [chosen, setChosen] = useState(['read']);
-  const [isCopied, setCopied] = useState(false);
   const [made, setMade] = useState<string | null>(null);
   const [refusal, setRefusal] = useState<string | null>(null);
   const attempt = async (work: () => Promise<void>) => {
@@ -68,10 +58,12 @@ export function TokenPanel({
                 <TextAction
                   icon="copy"
                   onClick={() =>
-                    void navigator.clipboard.writeText(made).then(() => setCopied(true))
+                    void navigator.clipboard
+                      .writeText(made)
+                      .then(() => announce({ tone: 'ok', title: 'The token is copied.' }))
                   }
                 >
-                  <span aria-live="polite">{isCopied ? 'Copied' : 'Copy'}</span>
+                  Copy
                 </TextAction>
               }
               isAnnounced
@@ -126,61 +118,14 @@ export function TokenPanel({
       </section>
       <section className="min-w-0">
         <SectionOpener title="New token" />
-        <form
-          className="flex max-w-[440px] flex-col gap-4"
-          onSubmit={(event) => {
-            event.preventDefault();
-            const form = new FormData(event.currentTarget);
-            void attempt(async () => {
-              const token = await createToken(collaboration, {
-                name: String(form.get('name')),
-                days: Number(form.get('days')),
-                scopes: chosen,
-              });
-              setMade(token.token);
-              setCopied(false);
-            });
+        <TokenForm
+          collaboration={collaboration}
+          onMade={(token) => {
+            setMade(token);
+            setRefusal(null);
+            void mutate();
           }}
-        >
-          <TextField label="What it is for" name="name" required maxLength={100} />
-          <fieldset className="flex flex-col gap-2">
-            <legend className="mb-1 text-[14px] text-ink3">It may</legend>
-            {scopes.map((scope) => (
-              <CheckboxField
-                key={scope.value}
-                label={scope.label}
-                hint={scope.hint}
-                checked={chosen.includes(scope.value)}
-                onChange={(event) =>
-                  setChosen(
-                    event.target.checked
-                      ? [...chosen, scope.value]
-                      : chosen.filter((held) => held !== scope.value),
-                  )
-                }
-              />
-            ))}
-          </fieldset>
-          <NumberField
-            label="It ends after"
-            name="days"
-            unit="days"
-            defaultValue={90}
-            min={1}
-            max={365}
-            required
-          />
-          <div>
-            <Button
-              type="submit"
-              variant="primary"
-              icon="key"
-              disabledReason={chosen.length === 0 ? 'Choose what it may do' : undefined}
-            >
-              Make a token
-            </Button>
-          </div>
-        </form>
+        />
       </section>
     </div>
   );

@@ -1,11 +1,11 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
 import { createCollaboration } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
+import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
+import { createCollaborationSchema } from '@/lib/schemas/people';
 
 const slugFrom = (name: string) =>
   name
@@ -17,44 +17,35 @@ const slugFrom = (name: string) =>
 
 /** Starts a collaboration, whose owner the person becomes. */
 export function WelcomeForm() {
-  const [name, setName] = useState('');
-  const [ownSlug, setOwnSlug] = useState<string | null>(null);
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
-  const slug = ownSlug ?? slugFrom(name);
-  const submit = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
-      const made = await createCollaboration({ name, slug });
-      window.location.assign(`/${made.slug}`);
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-      setBusy(false);
-    }
-  };
+  const { form, field, submit, refusal, isBusy } = useSchemaForm(createCollaborationSchema, {
+    name: '',
+    slug: '',
+  });
+  const isOwnSlug = form.formState.dirtyFields.slug === true;
   return (
     <form
+      noValidate
       className="flex flex-col gap-4"
-      onSubmit={(event) => {
-        event.preventDefault();
-        void submit();
-      }}
+      onSubmit={submit(async (values) => {
+        const { slug } = await createCollaboration(values);
+        window.location.assign(`/${slug}`);
+      })}
     >
       <TextField
         label="Name of the collaboration"
-        value={name}
-        onChange={(event) => setName(event.target.value)}
         required
-        maxLength={100}
+        {...field('name', {
+          // The address follows the name until it is typed itself.
+          onChange: (event) => {
+            if (!isOwnSlug) form.resetField('slug', { defaultValue: slugFrom(event.target.value) });
+          },
+        })}
       />
       <TextField
         label="Its address"
         hint="Lower-case letters, digits and hyphens."
-        value={slug}
-        onChange={(event) => setOwnSlug(event.target.value)}
         required
-        maxLength={39}
+        {...field('slug')}
       />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>

@@ -4,7 +4,7 @@ import { useRouter } from 'next/navigation';
 import { type KeyboardEvent, useEffect, useId, useMemo, useRef, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useSearch } from '@/components/hooks/use-search';
-import { HiddenModalTitle, Modal } from '@/components/ui/dialog';
+import { HiddenModalTitle, Modal } from '@/components/ui/dialog-parts';
 import { Icon } from '@/components/ui/icon';
 import { TextAction } from '@/components/ui/text-action';
 import { type BeginAction, type Entry, entriesHere, entryOfHit } from './entries';

@@ -1,9 +1,23 @@
 'use client';
 
-import * as Primitive from '@radix-ui/react-dropdown-menu';
-import Link from 'next/link';
-import type { ReactNode } from 'react';
-import { Icon, type IconName } from './icon';
+import { lazy, type ReactNode } from 'react';
+import { Icon } from './icon';
+import { type MenuLook, menuLooks } from './menu-look';
+import type * as Parts from './menu-parts';
+import { OpeningButton } from './opening-button';
+
+const load = () => import('./menu-parts');
+const MenuRoot = lazy(async () => ({ default: (await load()).MenuRoot }));
+
+export const MenuLink = lazy(async () => ({ default: (await load()).MenuLink }));
+export const MenuFile = lazy(async () => ({ default: (await load()).MenuFile }));
+export const MenuAction = lazy(async () => ({ default: (await load()).MenuAction }));
+export const MenuNote = lazy(async () => ({ default: (await load()).MenuNote }));
+export const MenuRule = lazy(async () => ({ default: (await load()).MenuRule }));
+// The type of a lazy component forgets that the value is one of the options.
+export const MenuChoice = lazy(async () => ({
+  default: (await load()).MenuChoice,
+})) as unknown as typeof Parts.MenuChoice;
 
 interface MenuProps {
   label: ReactNode;
@@ -14,144 +28,26 @@ interface MenuProps {
   look?: MenuLook;
 }
 
-export type MenuLook = 'outlined' | 'quiet' | 'plain' | 'round';
-
-/** How a button looks that opens something under itself. */
-export const menuLooks: Record<MenuLook, string> = {
-  outlined: 'h-9 gap-1.5 rounded border border-rule px-2.5 font-semibold max-lg:h-11',
-  quiet: 'h-9 gap-1.5 px-1 font-semibold text-act max-lg:h-11',
-  plain: 'h-9 gap-1 px-1.5 text-ink2 hover:text-ink max-lg:h-11',
-  round:
-    'size-8 justify-center rounded-full bg-act-soft font-bold text-act text-chart max-lg:size-11',
-};
-
-export const floatingLook =
-  'z-40 rounded border border-rule2 bg-surface text-ink focus-visible:outline-none';
-
 /** A button that opens a short list of links and actions; arrows and letters move, Escape closes. */
-export function Menu({
-  label,
-  accessibleName,
-  children,
-  align = 'left',
-  look = 'outlined',
-}: MenuProps) {
+export function Menu({ label, accessibleName, children, align, look = 'outlined' }: MenuProps) {
+  const className = `flex max-w-full items-center whitespace-nowrap md:max-w-[15rem] ${menuLooks[look]} ${look === 'round' ? 'shrink-0' : 'min-w-0'}`;
+  const face = (
+    <>
+      <span className="truncate">{label}</span>
+      {look !== 'round' && <Icon name="down" size={14} />}
+    </>
+  );
+  const button = { face, accessibleName, className };
   return (
-    // Modal would lock the page's scrolling by a style element, which the content policy refuses.
-    <Primitive.Root modal={false}>
-      <Primitive.Trigger
-        aria-label={accessibleName}
-        className={`flex max-w-full items-center whitespace-nowrap md:max-w-[15rem] ${menuLooks[look]} ${look === 'round' ? 'shrink-0' : 'min-w-0'}`}
-      >
-        <span className="truncate">{label}</span>
-        {look !== 'round' && <Icon name="down" size={14} />}
-      </Primitive.Trigger>
-      <Primitive.Portal>
-        <Primitive.Content
-          align={align === 'right' ? 'end' : 'start'}
-          sideOffset={4}
-          collisionPadding={8}
-          loop
-          className={`${floatingLook} max-h-[70dvh] min-w-48 max-w-[calc(100vw-16px)] overflow-y-auto py-1`}
-        >
+    <OpeningButton
+      {...button}
+      opens="menu"
+      load={load}
+      whenPressed={
+        <MenuRoot {...button} align={align}>
           {children}
-        </Primitive.Content>
-      </Primitive.Portal>
-    </Primitive.Root>
+        </MenuRoot>
+      }
+    />
   );
-}
-
-const itemLook =
-  'flex min-h-9 w-full cursor-pointer items-center gap-2 px-3.5 py-1 text-left text-ink text-note outline-none hover:no-underline data-[highlighted]:bg-act-soft data-[highlighted]:shadow-[inset_3px_0_0_var(--act)] max-lg:min-h-11';
-
-export function MenuLink({
-  href,
-  isCurrent = false,
-  children,
-}: {
-  href: string;
-  isCurrent?: boolean;
-  children: ReactNode;
-}) {
-  return (
-    <Primitive.Item asChild>
-      <Link
-        href={href}
-        aria-current={isCurrent ? 'true' : undefined}
-        className={`${itemLook} ${isCurrent ? 'font-semibold' : ''}`}
-      >
-        {children}
-      </Link>
-    </Primitive.Item>
-  );
-}
-
-/** An address that answers with a file. */
-export function MenuFile({ href, children }: { href: string; children: ReactNode }) {
-  return (
-    <Primitive.Item asChild>
-      <a href={href} download className={itemLook}>
-        {children}
-      </a>
-    </Primitive.Item>
-  );
-}
-
-export function MenuAction({ onSelect, children }: { onSelect(): void; children: ReactNode }) {
-  return (
-    <Primitive.Item className={itemLook} onSelect={onSelect}>
-      {children}
-    </Primitive.Item>
-  );
-}
-
-interface MenuChoiceProps<V extends string> {
-  label: string;
-  value: V;
-  options: { value: V; label: ReactNode; icon?: IconName }[];
-  onChange(value: V): void;
-}
-
-/** One of a few, chosen without leaving the menu. */
-export function MenuChoice<V extends string>({
-  label,
-  value,
-  options,
-  onChange,
-}: MenuChoiceProps<V>) {
-  return (
-    <Primitive.RadioGroup
-      aria-label={label}
-      value={value}
-      onValueChange={(next) => onChange(next as V)}
-    >
-      {options.map((option) => (
-        <Primitive.RadioItem
-          key={option.value}
-          value={option.value}
-          className={itemLook}
-          onSelect={(event) => event.preventDefault()}
-        >
-          {option.icon && <Icon name={option.icon} size={15} className="text-ink3" />}
-          <span className={option.value === value ? 'font-semibold' : ''}>{option.label}</span>
-          <Primitive.ItemIndicator className="ml-auto">
-            <Icon name="ok" size={15} />
-          </Primitive.ItemIndicator>
-        </Primitive.RadioItem>
-      ))}
-    </Primitive.RadioGroup>
-  );
-}
-
-/** Words between the entries, such as whose menu it is. */
-export function MenuNote({ children }: { children: ReactNode }) {
-  return (
-    <Primitive.Label className="block px-3.5 py-1.5 text-chart text-ink3">
-      {children}
-    </Primitive.Label>
-  );
-}
-
-export function MenuRule() {
-  return <Primitive.Separator className="my-1 border-rule border-t" />;
 }

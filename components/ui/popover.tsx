@@ -1,8 +1,11 @@
 'use client';
 
-import * as Primitive from '@radix-ui/react-popover';
-import type { ReactNode } from 'react';
-import { floatingLook, type MenuLook, menuLooks } from './menu';
+import { lazy, type ReactNode } from 'react';
+import { type MenuLook, menuLooks } from './menu-look';
+import { OpeningButton } from './opening-button';
+
+const load = () => import('./popover-parts');
+const PopoverRoot = lazy(async () => ({ default: (await load()).PopoverRoot }));
 
 interface PopoverProps {
   label: ReactNode;
@@ -11,8 +14,6 @@ interface PopoverProps {
   align?: 'left' | 'right';
   /** What opens, said to readers. */
   title: string;
-  isOpen?: boolean;
-  onOpenChange?(isOpen: boolean): void;
   children: ReactNode;
 }
 
@@ -21,34 +22,22 @@ export function Popover({
   label,
   accessibleName,
   look = 'outlined',
-  align = 'left',
+  align,
   title,
-  isOpen,
-  onOpenChange,
   children,
 }: PopoverProps) {
+  const className = `flex items-center whitespace-nowrap ${menuLooks[look]}`;
+  const button = { face: label, accessibleName, className };
   return (
-    <Primitive.Root open={isOpen} onOpenChange={onOpenChange}>
-      <Primitive.Trigger
-        aria-label={accessibleName}
-        className={`flex items-center whitespace-nowrap ${menuLooks[look]}`}
-      >
-        {label}
-      </Primitive.Trigger>
-      <Primitive.Portal>
-        <Primitive.Content
-          aria-label={title}
-          align={align === 'right' ? 'end' : 'start'}
-          sideOffset={4}
-          collisionPadding={8}
-          className={`${floatingLook} max-h-[75dvh] w-[min(440px,calc(100vw-16px))] overflow-y-auto overscroll-contain p-4`}
-        >
+    <OpeningButton
+      {...button}
+      opens="dialog"
+      load={load}
+      whenPressed={
+        <PopoverRoot {...button} align={align} title={title}>
           {children}
-        </Primitive.Content>
-      </Primitive.Portal>
-    </Primitive.Root>
+        </PopoverRoot>
+      }
+    />
   );
 }
-
-/** Inside a popover: what it wraps closes the panel when pressed. */
-export const PopoverClose = Primitive.Close;

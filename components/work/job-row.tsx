@@ -6,7 +6,7 @@ import { sentenceOf } from '@/components/hooks/api-problem';
 import { cancelJob, retryJob } from '@/components/hooks/use-runs';
 import { formatDuration } from '@/components/runs/time-words';
 import { Icon } from '@/components/ui/icon';
-import { PopoverClose } from '@/components/ui/popover';
+import { PopoverClose } from '@/components/ui/popover-parts';
 import { TextAction } from '@/components/ui/text-action';
 import type { JobView } from '@/lib/schemas/jobs';
 import { isOpenJob, jobHref, jobTitle } from './job-words';

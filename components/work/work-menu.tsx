@@ -1,14 +1,12 @@
 'use client';
 
-import { useState } from 'react';
+import dynamic from 'next/dynamic';
 import { Icon } from '@/components/ui/icon';
 import { Popover } from '@/components/ui/popover';
 import type { JobView } from '@/lib/schemas/jobs';
-import { JobRow } from './job-row';
 import { isOpenJob } from './job-words';
 
-/** Ended ones that are still listed, so that a stopped or failed one can be taken up again. */
-const ENDED_SHOWN = 5;
+const WorkList = dynamic(() => import('./work-list').then((list) => list.WorkList));
 
 interface WorkMenuProps {
   collaboration: string;
@@ -18,18 +16,13 @@ interface WorkMenuProps {
 
 /** What the workers are computing for the collaboration, and what ended last. */
 export function WorkMenu({ collaboration, jobs = [], onChanged }: WorkMenuProps) {
-  const [isOpen, setOpen] = useState(false);
   if (jobs.length === 0) return null;
-  const open = jobs.filter(isOpenJob);
-  const ended = jobs.filter((job) => !isOpenJob(job)).slice(0, ENDED_SHOWN);
-  const count = open.length;
+  const count = jobs.filter(isOpenJob).length;
   return (
     <Popover
       look="quiet"
       align="right"
       title="Running work"
-      isOpen={isOpen}
-      onOpenChange={setOpen}
       accessibleName={
         count === 0 ? 'Work: nothing is running' : `Work: ${count} running or waiting`
       }
@@ -47,24 +40,7 @@ export function WorkMenu({ collaboration, jobs = [], onChanged }: WorkMenuProps)
         </span>
       }
     >
-      <h2 className="text-note text-ink3">
-        {count === 0 ? 'Nothing is running' : 'Running and waiting'}
-      </h2>
-      <ul>
-        {open.map((job) => (
-          <JobRow key={job.id} collaboration={collaboration} job={job} onChanged={onChanged} />
-        ))}
-      </ul>
-      {ended.length > 0 && (
-        <>
-          <h2 className="mt-4 text-note text-ink3">Ended last</h2>
-          <ul>
-            {ended.map((job) => (
-              <JobRow key={job.id} collaboration={collaboration} job={job} onChanged={onChanged} />
-            ))}
-          </ul>
-        </>
-      )}
+      <WorkList collaboration={collaboration} jobs={jobs} onChanged={onChanged} />
     </Popover>
   );
 }

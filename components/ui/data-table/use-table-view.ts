@@ -47,7 +47,10 @@ export function useTableView(
 ): [TableView, (change: Partial<TableView>) => void] {
   const search = useSearchParams();
   const [view, setView] = useState<TableView>(() =>
-    readView(isInAddress ? new URLSearchParams(search) : new URLSearchParams(), facetIds),
+    readView(
+      isInAddress ? new URLSearchParams(search?.toString()) : new URLSearchParams(),
+      facetIds,
+    ),
   );
   const keys = facetIds.join();
   useEffect(() => {

@@ -1,0 +1,5 @@
+import { PageSkeleton } from '@/components/ui/page-skeleton';
+
+export default function CompareLoading() {
+  return <PageSkeleton what="the comparison" shape="plate" />;
+}

@@ -1,0 +1,5 @@
+import { PageSkeleton } from '@/components/ui/page-skeleton';
+
+export default function StarLoading() {
+  return <PageSkeleton what="the star" shape="axes" />;
+}

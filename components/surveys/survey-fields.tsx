@@ -1,0 +1,44 @@
+import type { useSchemaForm } from '@/components/ui/form/use-schema-form';
+import { NumberField } from '@/components/ui/number-field';
+import { TextAreaField } from '@/components/ui/text-area-field';
+import { TextField } from '@/components/ui/text-field';
+import { createSurveySchema } from '@/lib/schemas/surveys';
+
+/** What a survey is called and when it observed; how its maps are made is asked elsewhere. */
+export const surveyFactsSchema = createSurveySchema.pick({
+  name: true,
+  band: true,
+  description: true,
+  observedFrom: true,
+  observedTo: true,
+});
+
+type SurveyFactsForm = ReturnType<
+  typeof useSchemaForm<
+    (typeof surveyFactsSchema)['_zod']['input'],
+    (typeof surveyFactsSchema)['_zod']['output']
+  >
+>;
+
+const asYear = {
+  setValueAs: (text: unknown) => (text === '' || text === null ? null : Number(text)),
+};
+
+export function SurveyFields({ field }: Pick<SurveyFactsForm, 'field'>) {
+  return (
+    <>
+      <TextField label="Name" required {...field('name')} />
+      <TextField
+        label="Band of the contrast curves"
+        hint="As in the magnitude columns: H, K, L"
+        required
+        {...field('band')}
+      />
+      <NumberField label="First year" step={1} {...field('observedFrom', asYear)} />
+      <NumberField label="Last year" step={1} {...field('observedTo', asYear)} />
+      <div className="md:col-span-2">
+        <TextAreaField label="What it searched for" {...field('description')} />
+      </div>
+    </>
+  );
+}
