@@ -9,7 +9,9 @@ import { Icon } from '@/components/ui/icon';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
+import type { FirstStep } from '@/lib/schemas/first-steps';
 import type { Overview } from '@/lib/schemas/overview';
+import { ExampleFiles, FirstSteps } from './first-steps';
 import { LeadPlate } from './lead-plate';
 import { OverlapChart } from './overlap-chart';
 
@@ -71,9 +73,15 @@ function Log({ log }: { log: Overview['log'] }) {
 export function OverviewScreen({
   collaboration,
   initial,
+  steps,
+  hasDemonstration,
 }: {
   collaboration: string;
   initial: Overview;
+  /** First steps of the reader's role. */
+  steps: FirstStep[];
+  /** There is a collaboration of invented data besides this one. */
+  hasDemonstration: boolean;
 }) {
   const { data: overview = initial } = useOverview(collaboration, initial);
   const { surveys: list, analyses, can } = overview;
@@ -125,6 +133,10 @@ export function OverviewScreen({
             Bring one file of targets (name, distance, age, each with its error) and one contrast
             curve a star. You see every line checked before anything is stored.
           </EmptyState>
+          <div className="mt-9 grid gap-x-14 gap-y-9 lg:grid-cols-2">
+            <FirstSteps collaboration={collaboration} steps={steps} />
+            <ExampleFiles hasDemonstration={hasDemonstration} />
+          </div>
         </div>
       ) : (
         <div className="mt-8 grid gap-x-14 gap-y-9 xl:grid-cols-[minmax(0,7fr)_minmax(0,3fr)]">
@@ -147,6 +159,9 @@ export function OverviewScreen({
             </section>
           </div>
           <div className="flex min-w-0 flex-col gap-9">
+            {steps.some(({ isDone }) => !isDone) && (
+              <FirstSteps collaboration={collaboration} steps={steps} />
+            )}
             <section>
               <SectionOpener title="Waiting for a person" />
               <Waiting waiting={overview.waiting} />

@@ -21,6 +21,7 @@ import {
 import { endWithLauncher } from './death-signal.mjs';
 import { askQuestions } from './demo/analyses';
 import { companionsOf } from './demo/companions';
+import { addExercise } from './demo/exercise';
 import { companionsFile, coolingFile, curvesFile, targetsFile } from './demo/files';
 import { addNeighbours, memberOf, NEIGHBOURS } from './demo/neighbours';
 import { demoPeople, makePassword } from './demo/people';
@@ -182,10 +183,23 @@ async function seedNeighbours(): Promise<void> {
   say('a second collaboration shares a survey with it, and offers another');
 }
 
+/** The exercise computes nothing, so that an older demonstration gets it too. */
+async function seedExercise(): Promise<void> {
+  const { settings } = await CollaborationRow.findOne({
+    where: { slug: SLUG },
+    rejectOnEmpty: true,
+  });
+  if (typeof settings.leadAnalysisId !== 'string') return;
+  const statistician = await memberOf(SLUG, 'linhart@breakwater.example');
+  const student = await memberOf(SLUG, 'hadley@breakwater.example');
+  await addExercise(statistician, student, settings.leadAnalysisId);
+}
+
 async function seed(): Promise<void> {
   database();
   const known = await CollaborationRow.findOne({ where: { slug: SLUG } });
   const isReady = known?.settings.isDemonstrationReady === true;
+  if (isReady) await seedExercise();
   if (isReady && (await areNeighboursThere())) {
     say('the demonstration is there already');
     return;
@@ -194,7 +208,10 @@ async function seed(): Promise<void> {
   const worker = startWorker();
   const ended = new Promise<void>((resolve) => worker.once('exit', () => resolve()));
   try {
-    if (!isReady) await seedBreakwater();
+    if (!isReady) {
+      await seedBreakwater();
+      await seedExercise();
+    }
     await seedNeighbours();
   } finally {
     worker.kill('SIGTERM');

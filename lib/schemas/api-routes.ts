@@ -18,6 +18,7 @@ import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
 import { candidateRoutes } from './candidate-routes';
 import { pageSchema, roleSchema } from './common';
+import { exampleRoutes } from './example-routes';
 import { exerciseRoutes } from './exercise-routes';
 import { exportRoutes } from './export-routes';
 import { jobSchema } from './jobs';
@@ -358,6 +359,7 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...candidateRoutes,
   ...sharingRoutes,
   ...starRoutes,
+  ...exampleRoutes,
   ...exerciseRoutes,
   ...statementRoutes,
   ...talkRoutes,
