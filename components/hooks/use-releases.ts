@@ -92,9 +92,6 @@ export const revokeGuestLink = (collaboration: string, id: string) =>
 export const bundleAddress = (collaboration: string, runId: string) =>
   apiPath(collaboration, 'runs', runId, 'bundle');
 
-export const fileAddress = (code: string, name: string) =>
-  `/api/v1/releases/${encodeURIComponent(code)}/files/${encodeURIComponent(name)}`;
-
 export const writeGuestNote = (token: string, body: { name: string; body: string }) =>
   request(`/api/v1/guest/${encodeURIComponent(token)}/notes`, guestNoteSchema, {
     method: 'POST',

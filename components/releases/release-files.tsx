@@ -1,8 +1,7 @@
-import { fileAddress } from '@/components/hooks/use-releases';
 import { Icon } from '@/components/ui/icon';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { ReleasePage } from '@/lib/schemas/release-page';
-import { formatOf, sizeWords } from './release-words';
+import { fileAddress, formatOf, sizeWords } from './release-words';
 
 type File = ReleasePage['files'][number];
 

@@ -1,4 +1,3 @@
-import { fileAddress } from '@/components/hooks/use-releases';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -11,7 +10,7 @@ import { ReleaseFiles } from './release-files';
 import { ReleaseMap } from './release-map';
 import { ReleasePlate } from './release-plate';
 import { ReleaseSeal } from './release-seal';
-import { longDay, sizeWords } from './release-words';
+import { fileAddress, longDay, sizeWords } from './release-words';
 
 function Head({ page }: { page: Page }) {
   const bundle = page.files.find(({ mediaType }) => mediaType === 'application/zip');

@@ -44,3 +44,7 @@ export const formatOf = (name: string) => {
 /** "9d37·51aa·e2f4": enough to compare by eye. */
 export const shortDigest = (digest: string) =>
   [0, 4, 8].map((at) => digest.slice(at, at + 4)).join('·');
+
+/** Where a file of a published release is had. */
+export const fileAddress = (code: string, name: string) =>
+  `/api/v1/releases/${encodeURIComponent(code)}/files/${encodeURIComponent(name)}`;
