@@ -71,6 +71,12 @@ describe('the table', () => {
 
   it('lets a student do nothing to what others made', () => {
     const allowed = actions.filter((action) => may(actor('student'), action));
-    expect(allowed).toEqual(['read', 'write-note', 'copy-analysis', 'create-token']);
+    expect(allowed).toEqual([
+      'read',
+      'write-note',
+      'copy-analysis',
+      'submit-exercise',
+      'create-token',
+    ]);
   });
 });
