@@ -144,7 +144,7 @@ export function ReleasePage({ page }: { page: Page }) {
       {first && (
         <>
           <ReleasePlate run={first} />
-          <div className="mt-7 grid gap-x-10 gap-y-8 lg:grid-cols-[minmax(0,2fr)_minmax(0,1fr)]">
+          <div className="mt-7 grid gap-x-10 gap-y-8 lg:grid-cols-[minmax(0,2fr)_minmax(0,1fr)] print:grid-cols-[minmax(0,2fr)_minmax(0,1fr)] print:gap-x-6">
             <section className="min-w-0">
               <SectionOpener
                 number={1}
@@ -159,7 +159,7 @@ export function ReleasePage({ page }: { page: Page }) {
             </section>
             {side}
           </div>
-          <div className="release-second mt-8 grid gap-x-10 gap-y-8 lg:grid-cols-2">
+          <div className="release-second mt-8 grid gap-x-10 gap-y-8 lg:grid-cols-2 print:mt-0">
             <RunParts run={first} number={2} />
           </div>
           {others.map((run) => (

@@ -26,8 +26,8 @@ export function ReleasePlate({ run }: { run: ShownRun }) {
   const { answer, zero, quantity, credibleLevel, counted, statement } = run.result;
   const isFraction = quantity === 'host_fraction';
   return (
-    <Plate className="print-plain">
-      <div className="grid gap-x-10 gap-y-6 lg:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
+    <Plate>
+      <div className="grid gap-x-10 gap-y-6 lg:grid-cols-[minmax(0,2fr)_minmax(0,3fr)] print:grid-cols-[minmax(0,2fr)_minmax(0,3fr)] print:gap-x-5">
         <div className="min-w-0">
           <p className="text-ink3 text-note">
             {answer.isConstrained
