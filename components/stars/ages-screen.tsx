@@ -2,10 +2,11 @@
 
 import Link from 'next/link';
 import { useRouter } from 'next/navigation';
-import { useStars } from '@/components/hooks/use-stars';
+import { useConflicts } from '@/components/hooks/use-adoption';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { AgeValue, DistanceValue, StarList, ValueTableView } from '@/lib/schemas/stars';
+import { AdoptSeveral } from './adopt-several';
 import { StarTabs } from './star-tabs';
 import { ageWords, distanceWords } from './star-words';
 import { ValueChoice } from './value-choice';
@@ -19,8 +20,8 @@ interface AgesScreenProps {
 }
 
 const quantities = [
-  { quantity: 'age', only: 'age-conflict', title: 'Ages that differ' },
-  { quantity: 'distance', only: 'distance-conflict', title: 'Distances that differ' },
+  { quantity: 'age', title: 'Ages that differ' },
+  { quantity: 'distance', title: 'Distances that differ' },
 ] as const;
 
 function valueWords(value: AgeValue | DistanceValue | null): string {
@@ -30,9 +31,9 @@ function valueWords(value: AgeValue | DistanceValue | null): string {
 
 function Conflicts(props: AgesScreenProps & { index: 0 | 1 }) {
   const { collaboration, canAdopt, index } = props;
-  const { quantity, only, title } = quantities[index];
+  const { quantity, title } = quantities[index];
   const first = quantity === 'age' ? props.ages : props.distances;
-  const { data = first, mutate } = useStars(collaboration, { only, offset: 0, limit: 100 }, first);
+  const { data = first, mutate } = useConflicts(collaboration, quantity, first);
   const router = useRouter();
   return (
     <section className="mb-9">
@@ -41,6 +42,17 @@ function Conflicts(props: AgesScreenProps & { index: 0 | 1 }) {
         context={`${data.total} ${data.total === 1 ? 'star' : 'stars'}, by more than 2 σ between surveys, nothing adopted yet`}
       />
       {data.total === 0 && <p className="py-2 text-ink3">No surveys disagree.</p>}
+      {canAdopt && data.stars.length > 1 && (
+        <AdoptSeveral
+          collaboration={collaboration}
+          quantity={quantity}
+          stars={data.stars}
+          onAdopted={() => {
+            void mutate();
+            router.refresh();
+          }}
+        />
+      )}
       <ul className="grid gap-x-10 gap-y-6 xl:grid-cols-2">
         {data.stars.map((star) => (
           <li key={star.id} className="min-w-0">

@@ -185,7 +185,7 @@ export function StarScreen({
             star={star}
             quantity={quantity}
             canAdopt={star.can.adopt}
-            onChanged={replace}
+            onChanged={() => void mutate()}
           />
         ))}
       </section>

@@ -1,10 +1,10 @@
 'use client';
 
 import { useState } from 'react';
-import { adoptValue } from '@/components/hooks/use-stars';
 import { TextAction } from '@/components/ui/text-action';
-import type { AdoptedQuantity, Adoption, StarPage, StarView } from '@/lib/schemas/stars';
-import { ReasonDialog } from './reason-dialog';
+import type { AdoptedQuantity, Adoption, AdoptionChoices, StarView } from '@/lib/schemas/stars';
+import { AdoptDialog } from './adopt-dialog';
+import { OutsideValue } from './outside-value';
 import { ageWords, conflictWords, distanceWords } from './star-words';
 
 interface ValueChoiceProps {
@@ -12,7 +12,7 @@ interface ValueChoiceProps {
   star: StarView;
   quantity: AdoptedQuantity;
   canAdopt: boolean;
-  onChanged(star: StarPage): void;
+  onChanged(): void;
 }
 
 type Asked = { words: string; choice: Adoption['choice'] };
@@ -21,6 +21,9 @@ type Asked = { words: string; choice: Adoption['choice'] };
 export function ValueChoice(props: ValueChoiceProps) {
   const { collaboration, star, quantity, canAdopt, onChanged } = props;
   const [asked, setAsked] = useState<Asked | null>(null);
+  const [isOutside, setOutside] = useState(false);
+  const choicesOf = (choice: Adoption['choice']) =>
+    ({ quantity, choices: [{ starId: star.id, choice }] }) as AdoptionChoices;
   const held = star[quantity];
   const wordsOf = (entry: Pick<StarView['entries'][0], 'age' | 'distance'>) => {
     if (quantity === 'age') return entry.age && ageWords(entry.age);
@@ -86,19 +89,34 @@ export function ValueChoice(props: ValueChoiceProps) {
           )}
         </li>
       </ul>
+      {canAdopt && (
+        <TextAction onClick={() => setOutside(true)}>
+          Adopt another {quantity}
+          <span className="sr-only"> of {star.name}</span>
+        </TextAction>
+      )}
       {asked && (
-        <ReasonDialog
+        <AdoptDialog
+          collaboration={collaboration}
           title={`Use ${asked.words}?`}
-          action={`Make a new ${quantity}s table`}
+          choices={choicesOf(asked.choice)}
           onClose={() => setAsked(null)}
-          onDecide={async (why) => {
-            const body = { quantity, choice: asked.choice, why } as Adoption;
-            onChanged(await adoptValue(collaboration, star.id, body));
-          }}
+          onAdopted={onChanged}
         >
-          It holds for all entries of {star.name}; their maps are made anew. Runs that are there
-          keep the table that they used.
-        </ReasonDialog>
+          <p className="text-ink2">
+            It holds for all entries of {star.name}; their maps are made anew. Runs that are there
+            keep the table that they used.
+          </p>
+        </AdoptDialog>
+      )}
+      {isOutside && (
+        <OutsideValue
+          collaboration={collaboration}
+          star={star}
+          quantity={quantity}
+          onClose={() => setOutside(false)}
+          onAdopted={onChanged}
+        />
       )}
     </div>
   );

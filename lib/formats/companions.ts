@@ -1,7 +1,7 @@
 import { canonicalBand } from './bands';
 import type { ColumnSpec } from './columns';
 import { tellAboutMap } from './companion-map';
-import type { CompanionRecord, CompanionStatus, ReadContext } from './kinds';
+import type { CompanionRecord, CompanionStatus, EpochRecord, ReadContext } from './kinds';
 import { foldName } from './names';
 import { notNegative, positive, probability, type TableReading } from './reading';
 import { quoteFound } from './reports';
@@ -52,15 +52,21 @@ export function readCompanions(reading: TableReading, context: ReadContext): Com
   }
   if (!targets.check()) return [];
   if (!hasRows) reading.notes.inform('no-rows', 'The table has no rows: no detections');
-  const rowByKey = new Map<string, number>();
+  const known = new Map<string, FirstRow>();
   const records: CompanionRecord[] = [];
+  const rows: number[] = [];
   for (let row = 0; row < reading.table.rowCount; row += 1) {
     const record = readCompanion(reading, row, targets, context);
-    refuseRepeat(reading, row, record, rowByKey);
+    if (addEpoch(reading, row, record, known)) continue;
     if (reading.faults.count === 0) tellAboutMap(reading, row, record, context.maps);
     records.push(record);
+    rows.push(row);
   }
-  tellDefaults(reading, records);
+  tellDefaults(
+    reading,
+    records.filter((_, i) => reading.raw('probability', rows[i]) === null),
+  );
+  tellEpochs(reading, records);
   return records;
 }
 
@@ -143,32 +149,86 @@ function readErrors(reading: TableReading, row: number, name: string) {
   return { lower: both ?? lower ?? null, upper: both ?? upper ?? null };
 }
 
-function refuseRepeat(
-  reading: TableReading,
-  row: number,
-  { target, companion }: CompanionRecord,
-  rowByKey: Map<string, number>,
-): void {
-  if (target === '' || companion === '') return;
-  // b and B are different companions, so only the target's name is folded.
-  const key = `${foldName(target)}\n${companion}`;
-  const first = rowByKey.get(key);
-  if (first === undefined) {
-    rowByKey.set(key, row);
-    return;
-  }
-  const { line } = reading.place(first);
-  reading.fault(reading.place(row, 'companion'), {
-    code: 'name-duplicate',
-    message: `${quoteFound(`${target} ${companion}`)} is already on ${line === undefined ? `row ${first + 1}` : `line ${line}`}; expected each companion once`,
-  });
+interface FirstRow {
+  row: number;
+  record: CompanionRecord;
 }
 
-function tellDefaults(reading: TableReading, records: CompanionRecord[]): void {
-  const taken = records.filter((record, row) => {
-    const isStated = reading.raw('probability', row) !== null;
-    return !isStated && record.probability !== null;
+/** What rows of one companion at several epochs state alike. */
+const STATED = [
+  'status',
+  'massMjup',
+  'massErrorLowerMjup',
+  'massErrorUpperMjup',
+  'semiMajorAxisAu',
+  'semiMajorAxisErrorLowerAu',
+  'semiMajorAxisErrorUpperAu',
+  'probability',
+] as const;
+
+const epochOf = (record: CompanionRecord): EpochRecord => ({
+  separationArcsec: record.separationArcsec,
+  separationErrorArcsec: record.separationErrorArcsec,
+  positionAngleDeg: record.positionAngleDeg,
+  positionAngleErrorDeg: record.positionAngleErrorDeg,
+  contrastMag: record.contrastMag,
+  contrastErrorMag: record.contrastErrorMag,
+  band: record.band,
+  epoch: record.epoch,
+  reference: record.reference,
+});
+
+const isMeasured = ({ epoch, separationArcsec, positionAngleDeg }: EpochRecord) =>
+  epoch !== null && separationArcsec !== null && positionAngleDeg !== null;
+
+/**
+ * A companion stands on one row, or on one row an epoch where they state the same otherwise.
+ *
+ * @returns whether the row belongs to a companion that an earlier row brought
+ */
+function addEpoch(
+  reading: TableReading,
+  row: number,
+  record: CompanionRecord,
+  known: Map<string, FirstRow>,
+): boolean {
+  const { target, companion } = record;
+  if (target === '' || companion === '') return false;
+  // b and B are different companions, so only the target's name is folded.
+  const key = `${foldName(target)}\n${companion}`;
+  const first = known.get(key);
+  if (first === undefined) {
+    known.set(key, { row, record });
+    return false;
+  }
+  const further = epochOf(record);
+  const epochs = [epochOf(first.record), ...(first.record.furtherEpochs ?? [])];
+  const isOther = epochs.every(
+    ({ epoch, band }) => epoch !== further.epoch || band !== further.band,
+  );
+  const isSame = STATED.every((field) => record[field] === first.record[field]);
+  if (isMeasured(further) && isMeasured(epochs[0]) && isOther && isSame) {
+    first.record.furtherEpochs = [...epochs.slice(1), further];
+    return true;
+  }
+  const { line } = reading.place(first.row);
+  const place = line === undefined ? `row ${first.row + 1}` : `line ${line}`;
+  reading.fault(reading.place(row, 'companion'), {
+    code: 'name-duplicate',
+    message: `${quoteFound(`${target} ${companion}`)} is already on ${place}; expected each companion once, or once an epoch with the same status, mass and axis`,
   });
+  return true;
+}
+
+function tellEpochs(reading: TableReading, records: CompanionRecord[]): void {
+  const count = records.reduce((sum, { furtherEpochs = [] }) => sum + furtherEpochs.length, 0);
+  if (count === 0) return;
+  const rows = count === 1 ? '1 row is a further epoch' : `${count} rows are further epochs`;
+  reading.notes.inform('further-epochs', `${rows} of companions on earlier rows`);
+}
+
+function tellDefaults(reading: TableReading, unstated: CompanionRecord[]): void {
+  const taken = unstated.filter(({ probability: value }) => value !== null);
   if (taken.length === 0) return;
   const rows = taken.length === 1 ? '1 companion' : `${taken.length} companions`;
   reading.notes.inform(

@@ -143,6 +143,20 @@ export interface MapRecord {
 
 export type CompanionStatus = 'confirmed' | 'candidate' | 'ambiguous' | 'background';
 
+/** What was measured of a companion at one epoch. */
+export type EpochRecord = Pick<
+  CompanionRecord,
+  | 'separationArcsec'
+  | 'separationErrorArcsec'
+  | 'positionAngleDeg'
+  | 'positionAngleErrorDeg'
+  | 'contrastMag'
+  | 'contrastErrorMag'
+  | 'band'
+  | 'epoch'
+  | 'reference'
+>;
+
 export interface CompanionRecord {
   line: number;
   target: string;
@@ -167,6 +181,8 @@ export interface CompanionRecord {
   commonProperMotion: 'yes' | 'no' | 'untested' | null;
   probability: number | null;
   reference: string | null;
+  /** Of further rows that state the same companion at other epochs; absent where there are none. */
+  furtherEpochs?: EpochRecord[];
 }
 
 export interface CoolingTableRecord {

@@ -1,8 +1,11 @@
 import { type ApiRoute, route, team } from './api-route';
 import {
+  adoptionPreviewSchema,
+  adoptManySchema,
   adoptSchema,
   decisionSchema,
   overlapsSchema,
+  previewAdoptionSchema,
   proposedSchema,
   splitSchema,
   starListSchema,
@@ -56,4 +59,18 @@ export const starRoutes: ApiRoute[] = [
   route('get', `${team}/value-tables`, 'read', 'Tables of adopted ages and distances', {
     answer: valueTablesSchema,
   }),
+  route(
+    'post',
+    `${team}/value-tables`,
+    'write',
+    'Adopt ages or distances of several stars, in one new table',
+    { body: adoptManySchema, status: 201, answer: valueTablesSchema },
+  ),
+  route(
+    'post',
+    `${team}/value-tables/preview`,
+    'read',
+    'How adopted values would move the limit of the lead analysis',
+    { body: previewAdoptionSchema, answer: adoptionPreviewSchema },
+  ),
 ];

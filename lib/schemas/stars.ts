@@ -187,35 +187,76 @@ export const proposedSchema = z.object({ proposed: z.number() });
 export const decisionSchema = z.strictObject({ why: lineSchema(300) });
 export const splitSchema = z.strictObject({ targetId: idSchema, why: lineSchema(300) });
 
+/** The value of one of the star's entries, one from elsewhere, or each survey's own again. */
+const choiceOf = <Value extends z.ZodType>(value: Value) =>
+  z.union([
+    z.strictObject({ kind: z.literal('entry'), targetId: idSchema }),
+    z.strictObject({ kind: z.literal('value'), value, source: lineSchema(200) }),
+    z.strictObject({ kind: z.literal('none') }),
+  ]);
+const ageChoiceSchema = choiceOf(ageValueSchema);
+const distanceChoiceSchema = choiceOf(distanceValueSchema);
+
 export const adoptSchema = z.discriminatedUnion('quantity', [
   z.strictObject({
     quantity: z.literal('age'),
-    choice: z.union([
-      z.strictObject({ kind: z.literal('entry'), targetId: idSchema }),
-      z.strictObject({
-        kind: z.literal('value'),
-        value: ageValueSchema,
-        source: lineSchema(200),
-      }),
-      z.strictObject({ kind: z.literal('none') }),
-    ]),
+    choice: ageChoiceSchema,
     why: lineSchema(300),
   }),
   z.strictObject({
     quantity: z.literal('distance'),
-    choice: z.union([
-      z.strictObject({ kind: z.literal('entry'), targetId: idSchema }),
-      z.strictObject({
-        kind: z.literal('value'),
-        value: distanceValueSchema,
-        source: lineSchema(200),
-      }),
-      z.strictObject({ kind: z.literal('none') }),
-    ]),
+    choice: distanceChoiceSchema,
     why: lineSchema(300),
   }),
 ]);
 export type Adoption = z.infer<typeof adoptSchema>;
+
+/** Most stars of one table that a person fills at once. */
+const MOST_STARS = 200;
+const ofStars = <Choice extends z.ZodType>(choice: Choice) =>
+  z
+    .array(z.strictObject({ starId: idSchema, choice }))
+    .min(1, 'at least one star')
+    .max(MOST_STARS)
+    .refine(
+      (choices) => new Set(choices.map(({ starId }) => starId)).size === choices.length,
+      'each star once',
+    );
+
+/** Which values would be adopted, for several stars in one table. */
+export const previewAdoptionSchema = z.discriminatedUnion('quantity', [
+  z.strictObject({ quantity: z.literal('age'), choices: ofStars(ageChoiceSchema) }),
+  z.strictObject({ quantity: z.literal('distance'), choices: ofStars(distanceChoiceSchema) }),
+]);
+export type AdoptionChoices = z.infer<typeof previewAdoptionSchema>;
+
+export const adoptManySchema = z.discriminatedUnion('quantity', [
+  z.strictObject({
+    quantity: z.literal('age'),
+    choices: ofStars(ageChoiceSchema),
+    why: lineSchema(300),
+  }),
+  z.strictObject({
+    quantity: z.literal('distance'),
+    choices: ofStars(distanceChoiceSchema),
+    why: lineSchema(300),
+  }),
+]);
+export type AdoptMany = z.infer<typeof adoptManySchema>;
+
+/** How the limit of the lead analysis would move, computed from its newest run. */
+export const adoptionPreviewSchema = z.object({
+  lead: z.object({ key: z.string(), name: z.string(), run: z.number() }).nullable(),
+  level: z.number().nullable(),
+  isFraction: z.boolean(),
+  /** Stars of that run whose maps would change. */
+  stars: z.number(),
+  /** With the values that hold now, and with those to be adopted; null with `missing` saying why. */
+  before: z.number().nullable(),
+  after: z.number().nullable(),
+  missing: z.string().nullable(),
+});
+export type AdoptionPreview = z.infer<typeof adoptionPreviewSchema>;
 
 export const valueTableSchema = z.object({
   quantity: adoptedQuantitySchema,

@@ -1,11 +1,12 @@
 import type { Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { NotFound } from '@/lib/errors';
+import { Conflict, NotFound } from '@/lib/errors';
 import { select } from '@/lib/queue/statement';
 import type {
   AdoptedQuantity,
   Adoption,
+  AdoptMany,
   AgeValue,
   DistanceValue,
   ValueTableView,
@@ -28,7 +29,15 @@ interface Chosen {
   source: string;
 }
 
-function choose({ quantity, choice }: Adoption, entries: EntryRow[]): Chosen {
+/**
+ * The value that a choice names.
+ *
+ * @throws NotFound for an entry of another star, or one without the quantity
+ */
+export function choose(
+  { quantity, choice }: Pick<Adoption, 'quantity' | 'choice'>,
+  entries: EntryRow[],
+): Chosen {
   if (choice.kind === 'value') return { value: choice.value, source: choice.source };
   if (choice.kind === 'none') return { value: null, source: 'each survey’s own value' };
   const entry = entries.find(({ targetId }) => targetId === choice.targetId);
@@ -40,7 +49,7 @@ function choose({ quantity, choice }: Adoption, entries: EntryRow[]): Chosen {
 }
 
 /** Columns that an adopted value leaves empty must not keep a survey's. */
-function whole(quantity: AdoptedQuantity, value: Chosen['value']): Chosen['value'] {
+export function whole(quantity: AdoptedQuantity, value: Chosen['value']): Chosen['value'] {
   if (value === null) return null;
   const empty =
     quantity === 'age'
@@ -73,39 +82,54 @@ async function nextTable(
 }
 
 /**
- * Adopts one age or distance of a star for all of its entries, in a new numbered table; maps that
- * rest on it are made anew.
+ * Adopts one age or distance each for stars, for all of their entries, in one new numbered table;
+ * maps that rest on them are made anew.
  */
-export async function adoptValue(actor: Actor, starId: string, given: Adoption): Promise<void> {
-  const star = await findStar(actor, starId);
-  const { entriesOf } = await loadSky(actor.collaborationId, star.id);
-  const entries = entriesOf.get(star.id) ?? [];
-  demand(actor, 'adopt-values', { isLead: await leadsStar(actor, entries) });
-  const { value, source } = choose(given, entries);
-  const { quantity, why } = given;
+export async function adoptValues(actor: Actor, given: AdoptMany): Promise<void> {
+  const { quantity, why, choices } = given;
   const { collaborationId } = actor;
+  const sky = await loadSky(collaborationId);
+  const chosen: (Chosen & { star: StarRow })[] = [];
+  for (const { starId, choice } of choices) {
+    const star = await findStar(actor, starId);
+    const entries = sky.entriesOf.get(star.id) ?? [];
+    demand(actor, 'adopt-values', { isLead: await leadsStar(actor, entries) });
+    const asked = { quantity, choice } as Pick<Adoption, 'quantity' | 'choice'>;
+    chosen.push({ star, ...choose(asked, entries) });
+  }
+  if (new Set(chosen.map(({ star }) => star.id)).size < chosen.length) {
+    throw new Conflict('Two of the stars were found to be one: choose one value for it');
+  }
   await inTransaction(async (transaction) => {
     const table = await nextTable(actor, quantity, why, transaction);
-    await AdoptedValueRow.create(
-      {
+    await AdoptedValueRow.bulkCreate(
+      chosen.map(({ star, value, source }) => ({
         tableId: table.id,
         collaborationId,
         starId: star.id,
         value: whole(quantity, value),
         source,
-      },
+      })),
       { transaction },
     );
     const targets = await TargetRow.findAll({
       attributes: ['id', 'surveyId'],
-      where: { starId: star.id },
+      where: { starId: chosen.map(({ star }) => star.id) },
       transaction,
     });
     await refreshMaps(actor, targets, transaction);
-    const summary = `made ${quantity}s table ${table.number}, ${star.name} ${source}: ${why}`;
+    const [{ star, source }] = chosen;
+    const what = chosen.length === 1 ? `${star.name} ${source}` : `${chosen.length} stars`;
+    const summary = `made ${quantity}s table ${table.number}, ${what}: ${why}`;
     const item = { kind: 'value-table', id: table.id };
     await recordAudit(actor, 'adopt-values', item, summary, transaction);
   });
+}
+
+/** Adopts one value of one star. */
+export function adoptValue(actor: Actor, starId: string, given: Adoption): Promise<void> {
+  const { quantity, choice, why } = given;
+  return adoptValues(actor, { quantity, choices: [{ starId, choice }], why } as AdoptMany);
 }
 
 /** Stars with an adopted value as of each table. */

@@ -6,6 +6,7 @@ import { POST as giveVerdict } from '@/app/api/v1/collaborations/[collaboration]
 import { type CandidateDetail, candidateDetailSchema } from '@/lib/schemas/candidates';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import { builtInMagnitude } from '@/lib/sensitivity';
+import { adoptValue } from '@/lib/services/star-values';
 import {
   AuditEntryRow,
   type CompanionRow,
@@ -16,6 +17,7 @@ import {
 } from '@/models';
 import { withDatabase } from '../support/database';
 import {
+  actorOf,
   addMember,
   bearer,
   call,
@@ -120,6 +122,48 @@ describe('epochs of a candidate', () => {
     expect(two.hypotheses?.background.probability).toBeGreaterThan(0.5);
     expect(two.hypotheses?.commonProperMotion.probability).toBeLessThan(1e-9);
     expect(two.axis?.projectedSeparationAu).toBeCloseTo((0.910388 * 1000) / 21.5, 6);
+  });
+
+  it('of two surveys stand together, and the adopted distance of the star counts', async () => {
+    const row = await candidate({ name: 'shared' });
+    const elsewhere = await buildSurvey(collaboration.id, { name: 'Elsewhere' });
+    const twin = await buildTarget(elsewhere, { name: 'Host', curves: [] });
+    const same = await buildCompanion(twin, { name: 'Shared', status: 'candidate' });
+    const [first, second] = BACKGROUND;
+    await post(addObservation, row, epochOf(...first));
+    await post(addObservation, same, epochOf(...second));
+    const { starId } = target;
+    const before = await read(row);
+    expect(before.seen.map(({ survey: name }) => name)).toEqual([undefined, 'Elsewhere']);
+    expect(before.hypotheses?.background.probability).toBeGreaterThan(0.5);
+    expect(before.target.adopted).toEqual([]);
+    const choice = {
+      kind: 'value' as const,
+      value: {
+        distancePc: 50,
+        distanceErrorPc: 1,
+        parallaxMas: null,
+        parallaxErrorMas: null,
+      },
+      source: 'A catalogue',
+    };
+    const actor = await actorOf(people.owner, collaboration);
+    await adoptValue(actor, starId, { quantity: 'distance', choice, why: 'Newer' });
+    const after = await read(row);
+    expect(after.target).toMatchObject({ distancePc: 50 });
+    expect(after.target.adopted).toEqual(['distance of distances table 1, A catalogue']);
+    // Separation times distance, by hand: 0.842 arcsec at 50 pc.
+    expect(after.axis?.projectedSeparationAu).toBeCloseTo(0.842 * 50, 6);
+    await target.reload();
+    expect(target.parallaxMas).toBe(21.5);
+    await adoptValue(actor, starId, {
+      quantity: 'distance',
+      choice: { kind: 'none' },
+      why: 'To go on',
+    });
+    await query('delete from survey where id = $1', [elsewhere.id]);
+    await target.update({ mapState: 'none' });
+    await query('delete from job');
   });
 
   it('say what is missing where the star has no proper motion', async () => {

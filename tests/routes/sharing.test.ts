@@ -6,9 +6,7 @@ import { GET as getOverview } from '@/app/api/v1/collaborations/[collaboration]/
 import { GET as getRun } from '@/app/api/v1/collaborations/[collaboration]/runs/[run]/route';
 import { POST as accept } from '@/app/api/v1/collaborations/[collaboration]/shares/[share]/accept/route';
 import { POST as refresh } from '@/app/api/v1/collaborations/[collaboration]/shares/[share]/refresh/route';
-import { POST as refuse } from '@/app/api/v1/collaborations/[collaboration]/shares/[share]/refuse/route';
 import { POST as withdraw } from '@/app/api/v1/collaborations/[collaboration]/shares/[share]/withdraw/route';
-import { GET as listShares } from '@/app/api/v1/collaborations/[collaboration]/shares/route';
 import {
   PATCH as changeSurvey,
   GET as getSurvey,
@@ -18,12 +16,8 @@ import { GET as listTargets } from '@/app/api/v1/collaborations/[collaboration]/
 import { GET as listSurveys } from '@/app/api/v1/collaborations/[collaboration]/surveys/route';
 import { PATCH as markTarget } from '@/app/api/v1/collaborations/[collaboration]/targets/[target]/route';
 import { POST as upload } from '@/app/api/v1/collaborations/[collaboration]/uploads/route';
-import type { RouteHandler } from '@/app/api/v1/handler';
-import { may } from '@/lib/access/permissions';
-import { type Role, roleSchema } from '@/lib/schemas/common';
 import { overviewSchema } from '@/lib/schemas/overview';
 import { runSchema } from '@/lib/schemas/runs';
-import { type ShareView, shareSchema, sharesSchema } from '@/lib/schemas/sharing';
 import { surveyListSchema, surveySchema, targetListSchema } from '@/lib/schemas/surveys';
 import {
   CompanionRow,
@@ -36,15 +30,7 @@ import {
   TargetRow,
 } from '@/models';
 import { withDatabase } from '../support/database';
-import {
-  actorOf,
-  bearer,
-  call,
-  createCollaborationWith,
-  type TestCollaboration,
-  type TestPerson,
-  tokenOf,
-} from '../support/people';
+import { actorOf } from '../support/people';
 import {
   buildAnalysis,
   buildCompanion,
@@ -54,63 +40,19 @@ import {
   buildTarget,
   recipeOf,
 } from '../support/sample';
+import { ask, buildSide, offerTo, post, type Side, sharesOf, terms } from '../support/sharing';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
 import { bundleWorker, killWorkers, startWorker, until } from '../support/worker';
 
 const { query } = withDatabase();
-const roles = roleSchema.options;
-
-interface Side {
-  collaboration: TestCollaboration;
-  people: Record<Role, TestPerson>;
-  headers: Record<string, string>;
-  code: string;
-}
 let giver: Side;
 let taker: Side;
 let stranger: Side;
 let source: SurveyRow;
 let own: SurveyRow;
 
-async function buildSide(name: string): Promise<Side> {
-  const { collaboration, people } = await createCollaborationWith(roles, { name });
-  const headers = bearer(await tokenOf(people.owner, collaboration));
-  const side = { collaboration, people, headers, code: '' };
-  return { ...side, code: (await sharesOf(side)).code };
-}
-
-const ask = (
-  side: Side,
-  handler: RouteHandler,
-  params: Record<string, string> = {},
-  body?: unknown,
-  given: { method?: string; by?: Record<string, string>; path?: string } = {},
-) =>
-  call(handler, {
-    method: given.method ?? (body === undefined ? 'GET' : 'POST'),
-    params: { collaboration: side.collaboration.slug, ...params },
-    headers: given.by ?? side.headers,
-    path: given.path,
-    body,
-  });
-const post = (side: Side, handler: RouteHandler, params: Record<string, string> = {}) =>
-  ask(side, handler, params, undefined, { method: 'POST' });
-const sharesOf = async (side: Side) =>
-  sharesSchema.parse(await (await ask(side, listShares)).json());
 const surveyOf = async (side: Side, slug: string) =>
   surveySchema.parse(await (await ask(side, getSurvey, { survey: slug })).json());
-
-const terms = {
-  scope: 'whole',
-  note: 'For the joint paper',
-  attribution: 'Data of the Giver survey, Team Giver 2026',
-};
-async function offerTo(to: Side, given: object = {}, from = source): Promise<ShareView> {
-  const body = { ...terms, code: to.code, ...given };
-  const response = await ask(giver, offer, { survey: from.slug }, body);
-  expect(response.status).toBe(201);
-  return shareSchema.parse(await response.json());
-}
 async function acceptAt(side: Side, share: string): Promise<SurveyRow> {
   const response = await post(side, accept, { share });
   expect(response.status).toBe(200);
@@ -149,81 +91,6 @@ beforeAll(async () => {
 });
 afterAll(killWorkers);
 
-describe('an offer', () => {
-  it('needs the right code, and leaves nothing when it is refused, taken back or expired', async () => {
-    const wrong = { ...terms, code: '0123456789ab' };
-    expect((await ask(giver, offer, { survey: 'given' }, wrong)).status).toBe(404);
-    const self = { ...terms, code: giver.code };
-    expect((await ask(giver, offer, { survey: 'given' }, self)).status).toBe(409);
-    const before = await query('select count(*) from survey');
-
-    const one = await offerTo(taker);
-    const again = await ask(giver, offer, { survey: 'given' }, { ...terms, code: taker.code });
-    expect(again.status).toBe(409);
-    const [seen] = (await sharesOf(taker)).shares;
-    expect(seen).toMatchObject({
-      direction: 'received',
-      other: 'Team Giver',
-      survey: { name: 'Given', slug: null },
-      holds: { targets: 2, maps: 2, curves: 2 },
-      offeredBy: giver.people.owner.name,
-      state: 'offered',
-      ...terms,
-    });
-    expect((await ask(taker, refuse, { share: one.id }, { why: 'Not now' })).status).toBe(200);
-    expect((await post(taker, accept, { share: one.id })).status).toBe(409);
-
-    const two = await offerTo(taker);
-    await ask(giver, withdraw, { share: two.id }, { why: 'A mistake' });
-    expect((await post(taker, accept, { share: two.id })).status).toBe(409);
-
-    const three = await offerTo(taker);
-    await query(`update share set expires_at = now() - interval '1 day' where id = $1`, [three.id]);
-    expect((await post(taker, accept, { share: three.id })).status).toBe(409);
-    const states = (await sharesOf(giver)).shares.map(({ state }) => state);
-    expect(states.sort()).toEqual(['expired', 'refused', 'taken-back']);
-    expect(await query('select count(*) from survey')).toEqual(before);
-    const waiting = overviewSchema.parse(await (await ask(taker, getOverview)).json()).waiting;
-    expect(waiting.filter(({ fact }) => fact.includes('Given'))).toEqual([]);
-  });
-
-  it('is nobody else’s to see, to accept or to withdraw', async () => {
-    const share = (await offerTo(taker)).id;
-    expect((await sharesOf(stranger)).shares).toEqual([]);
-    for (const handler of [accept, refresh]) {
-      expect((await post(stranger, handler, { share })).status).toBe(404);
-      expect((await post(giver, handler, { share })).status).toBe(404);
-    }
-    const why = { why: 'To see' };
-    expect((await ask(stranger, refuse, { share }, why)).status).toBe(404);
-    for (const side of [taker, stranger]) {
-      expect((await ask(side, withdraw, { share }, why)).status).toBe(404);
-    }
-    expect((await post(taker, accept, { share: 'nonsense' })).status).toBe(404);
-    // Before the answer the receiver has no row of it.
-    expect(await SurveyRow.count({ where: { shareId: share } })).toBe(0);
-    await ask(giver, withdraw, { share }, why);
-  });
-
-  it.each(roles)('is made and answered as the permission table says: %s', async (role) => {
-    const share = (await offerTo(taker)).id;
-    const byTaker = bearer(await tokenOf(taker.people[role], taker.collaboration));
-    const refused = await ask(taker, refuse, { share }, { why: 'No' }, { by: byTaker });
-    expect(refused.status).toBe(may({ roles: [role] }, 'accept-survey') ? 200 : 403);
-    if (refused.status === 403) await ask(taker, refuse, { share }, { why: 'No' });
-    const by = bearer(await tokenOf(giver.people[role], giver.collaboration));
-    const body = { ...terms, code: taker.code };
-    const isLead = role === 'collaborator';
-    const offered = await ask(giver, offer, { survey: 'given' }, body, { by });
-    const mayOffer = may({ roles: [role] }, 'offer-survey', { isLead });
-    expect(offered.status).toBe(mayOffer ? 201 : 403);
-    if (!mayOffer) return;
-    const { id } = shareSchema.parse(await offered.json());
-    const back = await ask(giver, withdraw, { share: id }, { why: 'No' }, { by });
-    expect(back.status).toBe(200);
-  });
-});
-
 describe('a whole survey', () => {
   let share: string;
   let copy: SurveyRow;
@@ -231,7 +98,7 @@ describe('a whole survey', () => {
 
   it('comes with its curves and companions, and its maps are the same without computing', async () => {
     const maps = await CompletenessMapRow.count();
-    share = (await offerTo(taker)).id;
+    share = (await offerTo(giver, 'given', taker)).id;
     copy = await acceptAt(taker, share);
     await noOpenMaps();
     const targets = await TargetRow.findAll({
@@ -411,7 +278,7 @@ describe('a whole survey', () => {
 
 describe('maps only', () => {
   it('come without curves, ages, magnitudes, notes, epochs or what a map was made from', async () => {
-    const share = (await offerTo(stranger, { scope: 'maps', note: '' })).id;
+    const share = (await offerTo(giver, 'given', stranger, { scope: 'maps', note: '' })).id;
     const copy = await acceptAt(stranger, share);
     await noOpenMaps();
     const rows = await TargetRow.findAll({
@@ -461,5 +328,21 @@ describe('maps only', () => {
     expect(job.fault).toBeNull();
     expect(run.result?.counted).toHaveLength(1);
     expect(run.result?.statement.conditions.join('\n')).toContain('its maps only, version');
+  });
+});
+
+describe('when the owner is no more', () => {
+  it('the copies stay with their names and attribution, and cannot be refreshed', async () => {
+    const { id } = await offerTo(giver, 'given', taker);
+    await acceptAt(taker, id);
+    await noOpenMaps();
+    await query('delete from collaboration where id = $1', [giver.collaboration.id]);
+    const { shared, targets } = await surveyOf(taker, 'given-shared-2');
+    expect(targets).toBe(2);
+    expect(shared).toMatchObject({ owner: 'Team Giver', hasNewer: false, isWithdrawn: false });
+    expect(shared?.attribution).toBe(terms.attribution);
+    expect((await post(taker, refresh, { share: id })).status).toBe(409);
+    await query('delete from collaboration where id = $1', [stranger.collaboration.id]);
+    expect(await ShareRow.count({ where: { receiverId: stranger.collaboration.id } })).toBe(0);
   });
 });

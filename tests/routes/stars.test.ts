@@ -11,12 +11,17 @@ import {
   POST as propose,
 } from '@/app/api/v1/collaborations/[collaboration]/stars/overlaps/route';
 import { GET as listStars } from '@/app/api/v1/collaborations/[collaboration]/stars/route';
-import { GET as listTables } from '@/app/api/v1/collaborations/[collaboration]/value-tables/route';
+import { POST as previewAdoption } from '@/app/api/v1/collaborations/[collaboration]/value-tables/preview/route';
+import {
+  POST as adoptMany,
+  GET as listTables,
+} from '@/app/api/v1/collaborations/[collaboration]/value-tables/route';
 import type { RouteHandler } from '@/app/api/v1/handler';
 import type { Actor } from '@/lib/access/actor';
 import { may } from '@/lib/access/permissions';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import {
+  adoptionPreviewSchema,
   overlapsSchema,
   starListSchema,
   starPageSchema,
@@ -48,6 +53,7 @@ import {
   buildTarget,
   recipeOf,
 } from '../support/sample';
+import { askToEnd } from '../support/study';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
 import { bundleWorker, killWorkers, startWorker, until } from '../support/worker';
 
@@ -73,12 +79,19 @@ beforeAll(async () => {
   second = await buildSurvey(collaboration.id, { name: 'Second' });
   for (let i = 1; i <= 3; i++) await buildTarget(first, { name: `Star ${i}` });
   // One star by its place: 300 mas/yr over 16 years, and 1.5 arcsec beside that.
-  await buildTarget(first, { name: 'Alpha', raDeg: 80, decDeg: -60, attributes: motion });
+  await buildTarget(first, {
+    name: 'Alpha',
+    raDeg: 80,
+    decDeg: -60,
+    spectralType: 'K4',
+    attributes: motion,
+  });
   await buildTarget(second, {
     name: 'Twin of Alpha',
     raDeg: 80 - (300 * 16) / 3.6e6 / Math.cos(Math.PI / 3),
     decDeg: -60 + (200 * 16 + 1500) / 3.6e6,
     distancePc: 25.5,
+    spectralType: 'K5',
     curves: [{ contrastMag: [7.5, 10, 12, 13.5, 14.4, 14.6] }],
   });
   await buildTarget(second, { name: 'Star 2', ageMyr: 24, ageLowerMyr: 21, ageUpperMyr: 27 });
@@ -165,6 +178,9 @@ describe('pairs that may be one star', () => {
     expect(overlapsSchema.parse(await decided.json()).open).toEqual([]);
     const apart = await runBoth();
     expect(apart.result?.stars).toBe(5);
+    const recipe = recipeOf([second], population);
+    const one = await buildAnalysis(collaboration.id, recipe, owner.personId);
+    const { run: twin } = await runToEnd(owner, `A-${one.number}`);
 
     expect((await ask(undo, { pair: id }, why)).status).toBe(200);
     expect((await ask(startRun, { analysis: `A-${both.number}` }, {})).status).toBe(422);
@@ -190,6 +206,11 @@ describe('pairs that may be one star', () => {
     expect((await runBoth()).resultDigest).toBe(joined.resultDigest);
     await apart.reload();
     expect(apart.result?.stars).toBe(5);
+
+    // The earlier run names a star that has no targets of its own any more.
+    const asked = { kind: 'influence', groupBy: 'spectral-type' } as const;
+    const { result } = await askToEnd(owner, twin, asked);
+    expect(result.groups.map(({ name, stars }) => [name, stars])).toEqual([['K', 1]]);
   });
 
   it('are not proposed again once decided, and a decision without a reason is refused', async () => {
@@ -285,6 +306,42 @@ describe('adopted ages', () => {
     await expect(query(`update adopted_value set source = 'x'`)).rejects.toThrow('not changed');
   });
 
+  it('may be tried first: the preview gives the limit of the run that follows, and stores nothing', async () => {
+    const star = await StarRow.findOne({ where: { name: 'Star 2' }, rejectOnEmpty: true });
+    const value = { ageMyr: 300, ageLowerMyr: 250, ageUpperMyr: 350 };
+    const choice = { kind: 'value', value, source: 'Gyrochronology, a later paper' };
+    const other = await StarRow.findOne({ where: { name: 'Star 1' }, rejectOnEmpty: true });
+    const choices = [
+      { starId: star.id, choice },
+      { starId: other.id, choice },
+    ];
+    const older = await runBoth();
+    const asked = await ask(previewAdoption, {}, { quantity: 'age', choices });
+    const preview = adoptionPreviewSchema.parse(await asked.json());
+    expect(preview).toMatchObject({ lead: { key: `A-${both.number}` }, stars: 2, missing: null });
+    // Maps of the run are stored in 16 bits: 1 in 65535 a node.
+    expect(preview.before).toBeCloseTo(older.result?.answer.limit ?? 0, 4);
+    expect(valueTablesSchema.parse(await (await ask(listTables)).json()).tables).toHaveLength(2);
+
+    const many = { quantity: 'age', choices, why: 'Rotation' };
+    const made = await ask(adoptMany, {}, many);
+    expect(made.status).toBe(201);
+    const [table] = valueTablesSchema.parse(await made.json()).tables;
+    expect([table.number, table.stars, table.changes.length]).toEqual([3, 2, 2]);
+    await mapsAreReady();
+    const newer = await runBoth();
+    expect(newer.inputs?.adopted).toEqual([{ quantity: 'age', table: 3, stars: 2 }]);
+    expect(preview.after).toBeCloseTo(newer.result?.answer.limit ?? 0, 4);
+    expect(Math.abs((preview.after ?? 0) - (preview.before ?? 0))).toBeGreaterThan(1e-3);
+
+    const back = choices.map(({ starId }) => ({ starId, choice: { kind: 'none' } }));
+    await ask(adoptMany, {}, { quantity: 'age', choices: back, why: 'To go on' });
+    const twice = [choices[0], choices[0]];
+    const refused = await ask(adoptMany, {}, { quantity: 'age', choices: twice, why: 'x' });
+    expect(refused.status).toBe(422);
+    await mapsAreReady();
+  });
+
   it('refuse a value with its bounds in another order, and an entry of another star', async () => {
     const star = await StarRow.findOne({ where: { name: 'Star 2' }, rejectOnEmpty: true });
     const value = { ageMyr: 30, ageLowerMyr: 40 };
@@ -316,6 +373,7 @@ describe('the list of stars', () => {
     const [{ id }] = (await list('q=alpha')).stars;
     const page = starPageSchema.parse(await (await ask(getStar, { star: id })).json());
     expect(page.curves.map(({ survey }) => survey).sort()).toEqual(['First', 'Second']);
+    expect(page.combined).toMatchObject({ surveys: ['First', 'Second'], rule: 'same-position' });
     expect(page.analyses.map(({ key }) => key).slice(0, 2)).toEqual(['A-1', 'A-2']);
     for (const { share } of page.analyses) expect(share).toBeGreaterThan(0.1);
     expect((await ask(getStar, { star: crypto.randomUUID() })).status).toBe(404);

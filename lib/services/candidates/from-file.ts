@@ -1,5 +1,5 @@
 import type { Transaction } from 'sequelize';
-import type { CompanionRecord } from '@/lib/formats';
+import type { CompanionRecord, EpochRecord } from '@/lib/formats';
 import { CompanionObservationRow, type CompanionRow, CompanionVerdictRow } from '@/models';
 import { statedOf } from './describe';
 
@@ -20,7 +20,7 @@ export function dayOf(epoch: string): string | null {
 /** The row's epoch, where it has one: a later file replaces what an earlier one said of that day. */
 async function keepObservation(
   row: CompanionRow,
-  record: CompanionRecord,
+  record: EpochRecord,
   uploadId: string,
   transaction: Transaction,
 ): Promise<void> {
@@ -89,6 +89,8 @@ export async function keepFromFile(
   from: { uploadId: string; personId: string },
   transaction: Transaction,
 ): Promise<void> {
-  await keepObservation(row, record, from.uploadId, transaction);
+  for (const epoch of [record, ...(record.furtherEpochs ?? [])]) {
+    await keepObservation(row, epoch, from.uploadId, transaction);
+  }
   await keepVerdict(row, from.uploadId, from.personId, transaction);
 }

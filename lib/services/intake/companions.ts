@@ -1,7 +1,13 @@
 import { type CompanionRecord, foldName, type Note } from '@/lib/formats';
-import { CompanionRow, CompanionVerdictRow, ContrastCurveRow, TargetRow } from '@/models';
+import {
+  CompanionObservationRow,
+  CompanionRow,
+  CompanionVerdictRow,
+  ContrastCurveRow,
+  TargetRow,
+} from '@/models';
 import { canonicalJson } from '@/models/digest';
-import { keepFromFile } from '../candidates/from-file';
+import { dayOf, keepFromFile } from '../candidates/from-file';
 import { type Plan, type PlanContext, type PlannedItem, summariseItems } from './plan';
 import { TargetNames } from './target-names';
 
@@ -43,6 +49,17 @@ const isUnchanged = (row: CompanionRow, fields: Fields) =>
     (key) => canonicalJson(row[key] ?? null) === canonicalJson(fields[key] ?? null),
   );
 
+const epochKey = (companionId: string, day: string | null, band: string | null) =>
+  [companionId, day, band].join(' ');
+
+async function knownEpochs(rows: CompanionRow[]): Promise<Set<string>> {
+  const there = await CompanionObservationRow.findAll({
+    attributes: ['companionId', 'observedOn', 'band'],
+    where: { companionId: rows.map(({ id }) => id) },
+  });
+  return new Set(there.map((one) => epochKey(one.companionId, one.observedOn, one.band)));
+}
+
 /** Says so where a file states something else than a person decided: nothing is overruled unseen. */
 async function noteOverruled(
   steps: { record: CompanionRecord; target: TargetRow; row: CompanionRow | undefined }[],
@@ -77,6 +94,7 @@ export async function planCompanions(
     where: { targetId: targets.map((target) => target.id) },
   });
   const known = new Map(rows.map((row) => [`${row.targetId}|${row.foldedName}`, row]));
+  const seen = await knownEpochs(rows);
   const items: PlannedItem[] = [];
   const steps: { record: CompanionRecord; target: TargetRow; row: CompanionRow | undefined }[] = [];
   for (const record of records) {
@@ -84,7 +102,10 @@ export async function planCompanions(
     if (!target) continue;
     const label = `${target.name} ${record.companion}`;
     const row = known.get(`${target.id}|${foldName(record.companion)}`);
-    const unchanged = row !== undefined && isUnchanged(row, fieldsOf(record));
+    const hasNewEpoch = (record.furtherEpochs ?? []).some(
+      (further) => !seen.has(epochKey(row?.id ?? '', dayOf(further.epoch ?? ''), further.band)),
+    );
+    const unchanged = row !== undefined && isUnchanged(row, fieldsOf(record)) && !hasNewEpoch;
     const place =
       record.massMjup === null || record.semiMajorAxisAu === null
         ? ''

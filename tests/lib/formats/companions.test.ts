@@ -48,6 +48,33 @@ describe('readCompanions(table)', () => {
     ]);
   });
 
+  it('takes further rows of a companion for further epochs, if they state the same otherwise', () => {
+    const columns = `${header},epoch,separation [arcsec],position_angle [deg],band`;
+    const first = 'A,b,confirmed,5,40,2015-01-02,0.8,30,H';
+    const read = (...rows: string[]) =>
+      recordsOf('companions', `${columns}\n${[first, ...rows].join('\n')}\n`).records;
+    const [record, ...others] = read(
+      'a,b,confirmed,5,40,2016-03-04,0.81,31,H',
+      'A,b,confirmed,5,40,2016-03-04,0.82,31,K',
+    );
+    expect(others).toEqual([]);
+    expect(record.furtherEpochs?.map((one) => [one.epoch, one.band, one.separationArcsec])).toEqual(
+      [
+        ['2016-03-04', 'H', 0.81],
+        ['2016-03-04', 'K', 0.82],
+      ],
+    );
+    for (const row of [
+      'A,b,confirmed,5,40,2015-01-02,0.9,30,H',
+      'A,b,confirmed,6,40,2016-03-04,0.81,31,H',
+      'A,b,confirmed,5,40,2016-03-04,,31,H',
+    ]) {
+      expect(faultsOf('companions', `${columns}\n${first}\n${row}\n`)).toEqual([
+        'name-duplicate at line 3, column "companion"',
+      ]);
+    }
+  });
+
   it.each([
     ['mass_error_lower', '1', 'pair-missing at line 2'],
     ['mass_error,mass_error_lower,mass_error_upper', '1,1,2', 'both-given at line 2'],
