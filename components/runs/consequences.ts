@@ -8,10 +8,11 @@ import {
 } from '@/lib/inference';
 import { fromLogIndex, populationWeights, toLogIndex } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { contract, type MovingAxis, weighContracted } from './contracted';
+import { contract, type MovingAxis } from './contracted';
 import { askedOf, orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
 import { type LiveSetting, withLikelihood } from './live-setting';
+import { viewContracted } from './live-views';
 import { TRACK, trackOf } from './tracks';
 
 /** The limit as a function of one control, all others standing still. */
@@ -45,17 +46,7 @@ export function traceIndex(
     const population = { ...definition, [fieldOf[moving]]: index };
     const limit = orNull(() => {
       const weights = populationWeights(sample.grid, population);
-      const completenessPerStar = weighContracted(contracted, weights[moving]);
-      const view: PopulationView = {
-        population,
-        completenessPerStar,
-        numberSeenPerStar: null,
-        rateScale: null,
-        hostMassMsun: null,
-        exposure: completenessPerStar.reduce((sum, c) => sum + c, 0),
-        stars: sample.stars.length,
-        shareOutsideMap: weights.shareOutsideMap,
-      };
+      const view = viewContracted(contracted, weights, { moving, definition: population });
       return answerFromView(view, asked).limit;
     });
     return limit ?? Number.NaN;

@@ -15,7 +15,7 @@ export function contract(
 ): Float64Array {
   const rows = sample.grid.massMjup.length;
   const columns = sample.grid.semiMajorAxisAu.length;
-  const stars = sample.stars.length;
+  const stars = sample.maps.length / (rows * columns);
   const nodes = moving === 'mass' ? rows : columns;
   const result = new Float64Array(stars * nodes);
   for (let star = 0; star < stars; star++) {

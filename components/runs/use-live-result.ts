@@ -1,10 +1,11 @@
 'use client';
 
 import { useMemo } from 'react';
-import { type PopulationView, viewPopulation } from '@/lib/inference';
+import type { PopulationView } from '@/lib/inference';
 import { type LiveAnswer, liveAnswer } from './live-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
+import { LiveViews } from './live-views';
 
 /** An answer, or the sentence that says why there is none. */
 export type LiveOutcome =
@@ -16,9 +17,10 @@ export function useLiveResult(
   sample: LiveSample | undefined,
   setting: LiveSetting,
 ): LiveOutcome | undefined {
+  const views = useMemo(() => sample && new LiveViews(sample), [sample]);
   const view = useMemo(
-    () => sample && attempt(() => viewPopulation(sample.maps, sample.grid, setting.definition)),
-    [sample, setting.definition],
+    () => views && attempt(() => views.of(setting.definition)),
+    [views, setting.definition],
   );
   return useMemo(() => {
     if (!sample || !view) return undefined;

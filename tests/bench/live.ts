@@ -1,5 +1,6 @@
 import { liveAnswer } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
+import { LiveViews } from '@/components/runs/live-views';
 import { type AnswerSettings, answerFromView, viewPopulation } from '@/lib/inference';
 import type { Amount } from './amount';
 import { LEVEL, referenceLimit, relativeError } from './posterior';
@@ -49,10 +50,23 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
     };
   };
   const targets = targetsFor(stars);
+  const views = new LiveViews(sample);
+  let turn = 0;
+  const drag = () => {
+    turn += 1;
+    return views.of({ ...POPULATION, massIndex: POPULATION.massIndex + (turn % 2) * 1e-9 });
+  };
   return [
     measured('view of the population', () => look().exposure, {}, []),
     measured('prior moves', () => answerFromView(view, asked).limit, errors, targets),
     measured('population moves', () => answerFromView(look(), asked).limit, errors, targets),
+    measured('one axis moves', () => answerFromView(drag(), asked).limit, errors, targets),
+    measured(
+      'all that the page shows, one axis moves',
+      () => liveAnswer(sample, drag(), setting).answer.limit,
+      errors,
+      targets,
+    ),
     measured(
       'all that the page shows',
       () => liveAnswer(sample, look(), setting).answer.limit,
@@ -64,6 +78,6 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
 
 /** What follows a control while it moves, as a share of one frame of the screen. */
 export function liveLines({ rounds }: Amount): Line[] {
-  const surveys = [5000, 400, 78].map(mapSurvey).reverse();
+  const surveys = [5000, 500, 400, 78].map(mapSurvey).reverse();
   return surveys.flatMap((survey) => linesOf(survey, rounds));
 }
