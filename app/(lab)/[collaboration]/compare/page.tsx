@@ -1,7 +1,8 @@
 import type { Metadata } from 'next';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
-import { CompareScreen } from '@/components/analyses/compare-screen';
+import { readSides, writeSide } from '@/components/compare/address';
+import { CompareScreen } from '@/components/compare/compare-screen';
 import { listAnalyses } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
 import { getRun } from '@/lib/services/runs';
@@ -13,28 +14,35 @@ export default async function ComparePage({
   searchParams,
 }: {
   params: Promise<{ collaboration: string }>;
-  searchParams: Promise<Record<string, string | undefined>>;
+  searchParams: Promise<Record<string, string | string[] | undefined>>;
 }) {
   const actor = await currentActor((await params).collaboration);
   const { analyses } = await listAnalyses(actor);
-  const wanted = ((await searchParams).with ?? '').split(',').filter((key) => key !== '');
+  const asked = (await searchParams).with;
+  const wanted = readSides(Array.isArray(asked) ? asked.join() : asked);
   const sides = await Promise.all(
-    wanted.slice(0, 2).map(async (key) => {
-      const analysis = analyses.find((one) => one.key === key);
-      const finished = analysis?.runs.find(isFinished);
-      if (!analysis || !finished) return { key, analysis: analysis ?? null, run: null };
-      return { key, analysis, run: await getRun(actor, finished.id) };
+    wanted.map(async (address) => {
+      const analysis = analyses.find(({ key }) => key === address.key) ?? null;
+      const finished = analysis?.runs.filter(isFinished);
+      const run = finished?.find(
+        ({ number }) => address.run === undefined || number === address.run,
+      );
+      return { address, analysis, run: run ? await getRun(actor, run.id) : null };
     }),
   );
   const used = sides.flatMap(({ run }) => run?.inputs?.population.id ?? []);
   const populations = await findPopulationsById(actor, used);
+  const choices = analyses.flatMap(({ key, name, runs }) =>
+    runs.filter(isFinished).map(({ number }, index) => ({
+      value: index === 0 ? key : `${key}.${number}`,
+      label: index === 0 ? `${key}: ${name}` : `${key}, run ${number}: ${name}`,
+    })),
+  );
   return (
     <CompareScreen
-      key={wanted.join()}
+      key={wanted.map(writeSide).join()}
       collaboration={actor.collaboration}
-      choices={analyses
-        .filter((analysis) => analysis.runs.some(isFinished))
-        .map(({ key, name }) => ({ key, name }))}
+      choices={choices}
       sides={sides.map((side) => ({
         ...side,
         population: populations.get(side.run?.inputs?.population.id ?? '') ?? null,

@@ -12,13 +12,18 @@ import { formatRange } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw, type ListedDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { SideAddress } from './address';
 
-/** One analysis of a comparison, with everything that its number rests on. */
+/** One side of a comparison, with everything that its number rests on. */
 export interface ComparedRun {
-  key: string;
+  letter: string;
+  address: SideAddress;
+  /** "A-31" where the run is the newest one, "A-31, run 2" otherwise. */
   name: string;
+  title: string;
   run: RunView;
   inputs: RunInputs;
+  /** With its detections set aside where the side is a twin. */
   result: RunResult;
   recipe: AnalysisRecipe;
   definition: ListedDefinition;
@@ -26,11 +31,14 @@ export interface ComparedRun {
 
 export interface ComparedInput {
   name: string;
-  a: string;
-  b: string;
-  /** A difference by which the two limits answer different questions. */
+  /** In the order of the sides. */
+  values: string[];
+  /** A difference by which the limits answer different questions. */
   changesQuestion: boolean;
 }
+
+export const isSameInAll = ({ values }: ComparedInput): boolean =>
+  values.every((value) => value === values[0]);
 
 function massWords(definition: ListedDefinition): string {
   return definition.form === 'mass-ratio'
@@ -38,13 +46,12 @@ function massWords(definition: ListedDefinition): string {
     : formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ');
 }
 
-/** Index by index where both are plain power laws, else each law in its words. */
+/** Index by index where all are plain power laws, else each law in its words. */
 function lawRows(
-  { definition: one }: ComparedRun,
-  { definition: other }: ComparedRun,
+  sides: ComparedRun[],
   row: (name: string, words: (run: ComparedRun) => string) => ComparedInput,
 ): ComparedInput[] {
-  if (!isPlainPowerLaw(one) || !isPlainPowerLaw(other)) {
+  if (!sides.every(({ definition }) => isPlainPowerLaw(definition))) {
     return [row('Law', ({ definition }) => describePopulation(definition))];
   }
   const index = (field: 'massIndex' | 'semiMajorAxisIndex') => (run: ComparedRun) =>
@@ -64,12 +71,12 @@ function candidateWords({ recipe, result }: ComparedRun): string {
 }
 
 /** Every input in words, in the order in which a reader asks for it. */
-export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
+export function compareInputs(sides: ComparedRun[]): ComparedInput[] {
   const row = (
     name: string,
     words: (run: ComparedRun) => string,
     changesQuestion = false,
-  ): ComparedInput => ({ name, a: words(a), b: words(b), changesQuestion });
+  ): ComparedInput => ({ name, values: sides.map(words), changesQuestion });
   return [
     row('Detections', (side) =>
       side.recipe.detections === 'none'
@@ -86,7 +93,7 @@ export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
       ({ definition: d }) => formatRange(d.semiMajorAxisMinAu, d.semiMajorAxisMaxAu, 'AU'),
       true,
     ),
-    ...lawRows(a, b, row),
+    ...lawRows(sides, row),
     row('Level', ({ result }) => describeLevel(result.credibleLevel), true),
     row(
       'Likelihood',
@@ -97,7 +104,7 @@ export function compareInputs(a: ComparedRun, b: ComparedRun): ComparedInput[] {
     row('Prior', ({ recipe, result }) => describePrior(recipe.prior, result.quantity)),
     row('Stars', ({ result }) => String(result.stars)),
     row('Surveys', ({ inputs }) => inputs.surveys.map((survey) => survey.name).join(', ')),
-    row('Maps', ({ inputs }) => sampleWords(inputs, a.inputs)),
+    row('Maps', ({ inputs }) => sampleWords(inputs, sides[0].inputs)),
     row('Stars in several surveys', ({ inputs }) => inputs.combination),
     row('Cooling', ({ inputs }) => inputs.cooling),
     row('Eccentricity', ({ inputs }) => inputs.eccentricity),
@@ -113,19 +120,37 @@ function sampleWords(inputs: RunInputs, first: RunInputs): string {
   return other === 0 ? 'as in A' : `${other} other than in A`;
 }
 
-export interface LevelPair {
+export interface ComparedLevel {
   level: number;
-  a: number;
-  b: number;
+  /** In the order of the sides; null where a side has no limit of its own quantity there. */
+  limits: (number | null)[];
 }
 
-/** Limits of both at the levels that both tables hold. */
-export function pairLevels(a: ComparedRun, b: ComparedRun): LevelPair[] {
-  const own = (side: ComparedRun, row: RunResult['levels'][number]) =>
-    side.result.quantity === 'host_fraction' ? row.hostFraction : row.meanNumber;
-  return a.result.levels.flatMap((row) => {
-    const other = b.result.levels.find((one) => Math.abs(one.level - row.level) < 1e-9);
-    const [first, second] = [own(a, row), other ? own(b, other) : null];
-    return first === null || second === null ? [] : [{ level: row.level, a: first, b: second }];
+/** Limits of all sides at the levels that every table holds. */
+export function limitsByLevel(sides: ComparedRun[]): ComparedLevel[] {
+  return sides[0].result.levels.flatMap(({ level }) => {
+    const rows = sides.map(({ result }) =>
+      result.levels.find((one) => Math.abs(one.level - level) < 1e-9),
+    );
+    if (rows.some((row) => row === undefined)) return [];
+    const limits = rows.map((row, side) => {
+      if (!row) return null;
+      return sides[side].result.quantity === 'host_fraction' ? row.hostFraction : row.meanNumber;
+    });
+    return [{ level, limits }];
   });
+}
+
+/** The same run as if nothing had been counted: the run recorded that answer beside its own. */
+export function withoutDetections(result: RunResult): RunResult {
+  return {
+    ...result,
+    answer: result.zero,
+    counted: [],
+    levels: result.levels.map((row) => ({
+      ...row,
+      hostFraction: row.hostFractionZero,
+      meanNumber: row.meanNumberZero,
+    })),
+  };
 }

@@ -1,0 +1,31 @@
+import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { RunView } from '@/lib/schemas/runs';
+import type { SideAddress } from './address';
+import { type ComparedRun, withoutDetections } from './differences';
+
+export interface CompareSide {
+  address: SideAddress;
+  analysis: AnalysisView | null;
+  /** The run that was asked for, with its result; null where there is none. */
+  run: RunView | null;
+  population: ListedPopulation | null;
+}
+
+/** A side with everything that is compared; undefined where it has no finished run. */
+export function comparedRun(side: CompareSide): Omit<ComparedRun, 'letter'> | undefined {
+  const { address, analysis, run, population } = side;
+  const recipe = analysisRecipeSchema.safeParse(run?.recipe);
+  if (!analysis || !run?.inputs || !run.result || !population || !recipe.success) return undefined;
+  const name = `${address.key}${address.run === undefined ? '' : `, run ${address.run}`}`;
+  return {
+    address,
+    name: address.isZero ? `${name} without detections` : name,
+    title: analysis.name,
+    run,
+    inputs: run.inputs,
+    result: address.isZero ? withoutDetections(run.result) : run.result,
+    recipe: address.isZero ? { ...recipe.data, detections: 'none' } : recipe.data,
+    definition: population.definition,
+  };
+}
