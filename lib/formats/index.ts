@@ -6,6 +6,7 @@ export {
   type LatexStyle,
   type LatexTable,
   latexMeasurement,
+  latexProse,
   writeLatexTable,
 } from './latex';
 export { uploadLimits } from './limits';

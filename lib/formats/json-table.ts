@@ -21,11 +21,14 @@ export function tableOfJson(
     what,
     maxRows,
     isKnownHeading,
+    headings = [],
     faults,
   }: {
     what: string;
     maxRows: number;
     isKnownHeading(heading: string): boolean;
+    /** Columns that are there even where no row has them. */
+    headings?: readonly string[];
     faults: FaultReport;
   },
 ): RawTable | null {
@@ -47,8 +50,8 @@ export function tableOfJson(
       faults.add({ code: 'schema', ...place, found: kindOf(item), expected: `one ${what}` });
     }
   });
-  const index = new Map<string, number>();
-  const firstItem: number[] = [];
+  const index = new Map(headings.map((heading, i) => [heading, i]));
+  const firstItem = headings.map(() => 1);
   objects.forEach(({ keys }, row) => {
     for (const key of keys) {
       if (index.has(key)) continue;

@@ -68,6 +68,20 @@ export function escapeLatex(text: string): string {
   return text.replace(special, (sign) => escapes[sign]).replace(/\s*[\r\n]+\s*/g, ' ');
 }
 
+/**
+ * A sentence of ours as LaTeX sets it: powers and the mass of Jupiter as mathematics.
+ *
+ * @example latexProse('dN/dM ∝ M^−1.3, 2 MJ') // 'dN/dM $\\propto$ $M^{-1.3}$, 2 $M_{\\mathrm{Jup}}$'
+ */
+export function latexProse(text: string): string {
+  return escapeLatex(text)
+    .replace(
+      /(\w)\\textasciicircum\{\}(\$-\$)?([\d.]*\d)/g,
+      (_, base, minus, power) => `$${base}^{${minus ? '-' : ''}${power}}$`,
+    )
+    .replace(/\bMJ\b/g, '$$M_{\\mathrm{Jup}}$$');
+}
+
 const unitsInLatex: Record<string, string> = {
   Mjup: '$M_{\\mathrm{Jup}}$',
   solMass: '$M_{\\odot}$',
@@ -121,7 +135,7 @@ function writeTabular(table: LatexTable, align: string, label: string): string[]
     '\\hline',
     '\\end{tabular}',
     ...(table.notes.length > 0
-      ? ['', `\\par\\small ${table.notes.map(escapeLatex).join(' ')}`]
+      ? ['', `\\par\\small ${table.notes.map(latexProse).join(' ')}`]
       : []),
     '\\end{table}',
   ];
@@ -137,7 +151,7 @@ function writeDeluxetable(table: LatexTable, align: string, label: string): stri
     table.rows.map((row) => rowText(row, 'deluxetable')).join(' \\\\\n'),
     '\\enddata',
     ...(table.notes.length > 0
-      ? [`\\tablecomments{${table.notes.map(escapeLatex).join(' ')}}`]
+      ? [`\\tablecomments{${table.notes.map(latexProse).join(' ')}}`]
       : []),
     '\\end{deluxetable}',
   ];

@@ -7,7 +7,7 @@ import { readFitsTable } from './fits-table';
 import { parseHdf5 } from './hdf5';
 import { cubeOfJson } from './json-map';
 import { tableOfJson } from './json-table';
-import { isObject, memberOf, parseJsonText } from './json-text';
+import { isArray, isObject, type JsonValue, memberOf, parseJsonText } from './json-text';
 import type { Container, ReadContext } from './kinds';
 import { uploadLimits } from './limits';
 import { cubeOfArrays } from './map-arrays';
@@ -214,6 +214,15 @@ function openNpy(bytes: Uint8Array, { context, faults }: OpenOptions): MapCube |
   return cubeOfArrays({ ...arrays, target: null, placeOf }, faults);
 }
 
+/** Names of a list of columns: a table without a row has headings too. */
+function headingsOf(columns: JsonValue | undefined): string[] {
+  if (!isArray(columns)) return [];
+  return columns.items.flatMap((column) => {
+    const name = isObject(column) ? memberOf(column, 'name') : undefined;
+    return typeof name === 'string' ? [name] : [];
+  });
+}
+
 function openJson(bytes: Uint8Array, options: OpenOptions): Opened | null {
   const { context, faults } = options;
   const parsed = parseJsonText(bytes, faults);
@@ -221,9 +230,13 @@ function openJson(bytes: Uint8Array, options: OpenOptions): Opened | null {
   if (context.kind === 'completeness-maps' && isObject(parsed.value)) {
     return asCube('json', cubeOfJson(parsed.value, faults));
   }
-  // Our own tables come as an object: what they rest on, and the rows.
+  // Our own tables come as an object: what they rest on, their columns, and the rows.
   const rows = isObject(parsed.value) ? memberOf(parsed.value, 'rows') : undefined;
-  return asTable('json', tableOfJson(rows ?? parsed.value, options));
+  if (!isObject(parsed.value) || rows === undefined) {
+    return asTable('json', tableOfJson(parsed.value, options));
+  }
+  const headings = headingsOf(memberOf(parsed.value, 'columns'));
+  return asTable('json', tableOfJson(rows, { ...options, headings }));
 }
 
 /** Opens a container that needs no waiting: everything but archives and HDF5. */

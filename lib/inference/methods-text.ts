@@ -85,9 +85,10 @@ function sampleSentences(facts: MethodsFacts): MethodsPart[] {
       ? ''
       : ` ${count(facts.leftOut, 'further entry').replace('entrys', 'entries')} of these surveys ${facts.leftOut === 1 ? 'was' : 'were'} left out, each for a stated reason.`;
   const chosen = facts.sample === null ? '' : ` The sample is selected by: ${facts.sample}.`;
+  const shared = surveys.length === 1 ? '' : ` Stars in several surveys: ${facts.combination}.`;
   return [
     `The sample holds ${count(facts.stars, 'star')}, each counted once, from ${surveys.join(', ')}.`,
-    `${chosen}${left} Stars in several surveys: ${facts.combination}.`,
+    `${chosen}${left}${shared}`,
   ];
 }
 
@@ -156,9 +157,10 @@ function answerSentences(facts: MethodsFacts): MethodsPart[] {
     );
   }
   for (const { name, upper, level: confidence, source } of beside) {
+    const papers = cited(source, behindLimits);
     parts.push(
-      ` Without a prior, the upper end at ${describeLevel(confidence)} confidence is ${formatRate(upper, quantity)} (${name})`,
-      ...cited(source, behindLimits),
+      ` Without a prior, the upper end at ${describeLevel(confidence)} confidence is ${formatRate(upper, quantity)}`,
+      ...(papers.length > 0 ? papers : [` (${name})`]),
       '.',
     );
   }

@@ -31,6 +31,38 @@ export async function findNumpy() {
   return (await findPython(['numpy'])).command;
 }
 
+const readerModules = ['numpy', 'astropy', 'pandas', 'h5py'];
+/** Commands that look at exported files, each with the package that brings it. */
+const readerCommands = [
+  { command: 'fitsverify', name: 'fitsverify' },
+  { command: 'xmllint', name: 'libxml2-utils' },
+  { command: 'pdffonts', name: 'poppler-utils' },
+];
+
+const isThere = async (/** @type {string} */ command) =>
+  (await run('sh', ['-c', `command -v ${command}`])).code === 0;
+
+/**
+ * The clients that read exported files. stilts, which brings 350 MB of Java, is asked where it is
+ * and missed nowhere.
+ *
+ * @returns {Promise<{ python: string | null, hasStilts: boolean, missing: FoundPrograms['missing'] }>}
+ */
+export async function findExportReaders() {
+  const python = await findPython(readerModules);
+  /** @type {FoundPrograms['missing']} */
+  const missing = [];
+  if (python.command === null) {
+    const packages = python.missing.map((name) => `python3-${name}`);
+    missing.push({ program: 'Astropy, pandas and h5py', packages });
+  }
+  for (const { command, name } of readerCommands) {
+    if (!(await isThere(command))) missing.push({ program: command, packages: [name] });
+  }
+  const hasStilts = await isThere('stilts');
+  return { python: python.command, hasStilts, missing };
+}
+
 /** @returns {Promise<FoundPrograms>} the programs that the live references are asked of */
 export async function findReferencePrograms() {
   const hasR = (await run('Rscript', ['--version'])).code === 0;

@@ -35,6 +35,12 @@ function compareRow(check: LiveCheck, row: number, theirs: ProgramAnswer): strin
   });
 }
 
+describe('checks', () => {
+  it.each(['R', 'SciPy'])('ask something of %s', (program) => {
+    expect(checks.filter((check) => check.program === program).length).toBeGreaterThan(0);
+  });
+});
+
 const found = await findReferencePrograms();
 const answers = await askPrograms(found, checks);
 

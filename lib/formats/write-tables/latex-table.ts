@@ -54,13 +54,21 @@ export function writeLatex(table: WrittenTable, choice: LatexChoice, style: Late
       })),
       rows,
       notes: [
-        ...table.provenance.map(([name, text]) => `${headingOf(name)}: ${text}.`),
+        ...table.provenance.filter(isForPaper).map(([name, text]) => noteOf(name, text)),
         'Digits follow the smaller error with two figures of it; numbers without an error are rounded to four digits.',
       ],
     },
     style,
   );
 }
+
+/** Fingerprints of what went in, and the seed, are in the other files: a note is read by people. */
+const isForPaper = ([name]: readonly [string, string]) =>
+  name !== 'seed' && (name === 'result_digest' || !name.endsWith('_digest'));
+
+/** A condition names itself. */
+const noteOf = (name: string, text: string) =>
+  name.startsWith('condition_') ? `${text}.` : `${headingOf(name)}: ${text}.`;
 
 function headingOf(name: string): string {
   const words = name.replaceAll('_', ' ');

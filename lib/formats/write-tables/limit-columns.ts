@@ -83,7 +83,12 @@ export const limitColumns: readonly ColumnDefinition[] = [
     description: 'Exposure: sum over stars of the mean detection probability',
   },
   { name: 'run', type: 'integer', description: 'Run of the analysis', ucd: 'meta.id' },
-  { name: 'engine_version', type: 'text', description: 'Version of the engine that made the maps' },
+  // Text where it is no number: a reader of CSV guesses the same.
+  {
+    name: 'engine_version',
+    type: 'identifier',
+    description: 'Version of the engine that made the maps',
+  },
   { name: 'counting_rule', type: 'text', description: 'Which detections count' },
   { name: 'candidates', type: 'text', description: 'What became of candidates without an answer' },
   {

@@ -1,4 +1,4 @@
-import { escapeLatex } from '@/lib/formats';
+import { latexProse } from '@/lib/formats';
 import { citeAsBibtex } from '@/lib/formats/bundle';
 import { writeBibtexEntry } from '@/lib/formats/write-bibtex';
 import { describeCandidates } from '@/lib/inference';
@@ -57,7 +57,7 @@ const styles = {
 const escapeMarkdown = (text: string) => text.replace(/[\\`*_[\]<>@#]/g, '\\$&');
 
 const asIs = (text: string) => text;
-const escapes = { txt: asIs, md: escapeMarkdown, tex: escapeLatex } as const;
+const escapes = { txt: asIs, md: escapeMarkdown, tex: latexProse } as const;
 
 /** The methods paragraph as text, Markdown or LaTeX; its citation keys are those of the BibTeX file. */
 export function writeMethods(run: FinishedRun, style: keyof typeof styles): string {

@@ -2,12 +2,24 @@ import { Op } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { Conflict, NotFound } from '@/lib/errors';
 import type { WrittenMaps } from '@/lib/formats';
-import { CompanionRow, CompletenessMapRow, type SurveyRow, TargetRow } from '@/models';
+import {
+  CompanionObservationRow,
+  CompanionRow,
+  CompletenessMapRow,
+  type SurveyRow,
+  TargetRow,
+} from '@/models';
 import { findSurvey } from '../surveys';
 import { asItStands, type CollectionFiles } from './collection-files';
 import { runTables } from './run-tables';
 import { mapsInOrder } from './stored-maps';
-import { companionsTable, targetsTable, writtenCompanion, writtenTarget } from './written-rows';
+import {
+  companionsTable,
+  targetsTable,
+  writtenCompanion,
+  writtenEpochs,
+  writtenTarget,
+} from './written-rows';
 
 const targetsOf = (survey: SurveyRow) =>
   TargetRow.findAll({ where: { surveyId: survey.id }, order: [['foldedName', 'ASC']] });
@@ -74,7 +86,7 @@ export async function surveyFiles(actor: Actor, slug: string): Promise<Collectio
           ),
       },
       companions: {
-        what: 'Companions and candidates as they can be imported again',
+        what: 'Companions and candidates, a row an epoch, as they can be imported again',
         latex: {
           columns: runTables.companions.latex.columns.filter(
             (name) => name !== 'used' && name !== 'reason',
@@ -92,9 +104,21 @@ export async function surveyFiles(actor: Actor, slug: string): Promise<Collectio
               (place.get(a.targetId) ?? 0) - (place.get(b.targetId) ?? 0) ||
               (a.foldedName < b.foldedName ? -1 : 1),
           );
+          const observations = await CompanionObservationRow.findAll({
+            where: { companionId: rows.map((row) => row.id) },
+            order: [
+              ['observedOn', 'ASC'],
+              ['band', 'ASC'],
+            ],
+          });
           return companionsTable(
             { name: 'companions', title: `Companions of ${survey.name}`, provenance },
-            rows.map((row) => writtenCompanion(row, nameOf.get(row.targetId) ?? '')),
+            rows.flatMap((row) =>
+              writtenEpochs(
+                writtenCompanion(row, nameOf.get(row.targetId) ?? ''),
+                observations.filter(({ companionId }) => companionId === row.id),
+              ),
+            ),
           );
         },
       },

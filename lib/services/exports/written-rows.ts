@@ -15,7 +15,7 @@ import {
   type WrittenTable,
   type WrittenTarget,
 } from '@/lib/formats';
-import type { CompanionRow, TargetRow } from '@/models';
+import type { CompanionObservationRow, CompanionRow, TargetRow } from '@/models';
 
 /** A stored target as a file states it; its age's errors are the distances to its 16 and 84 % points. */
 export function writtenTarget(row: TargetRow): WrittenTarget {
@@ -85,6 +85,35 @@ export function writtenCompanion(row: CompanionRow, target: string): WrittenComp
     probability: row.probability,
     reference: row.reference,
   };
+}
+
+/**
+ * A companion on one row an epoch, as a file with several states it.
+ *
+ * @param observations of this companion, in the order of their days
+ */
+export function writtenEpochs(
+  companion: WrittenCompanion,
+  observations: readonly CompanionObservationRow[],
+): WrittenCompanion[] {
+  if (observations.length === 0) return [companion];
+  const { epoch, band } = companion;
+  const own = observations.find((one) => one.observedOn === epoch && one.band === band);
+  const rest = observations.filter((one) => one !== own);
+  const further = rest.map((one) => ({
+    ...companion,
+    separationArcsec: one.separationArcsec,
+    separationErrorArcsec: one.separationErrorArcsec,
+    positionAngleDeg: one.positionAngleDeg,
+    positionAngleErrorDeg: one.positionAngleErrorDeg,
+    contrastMag: one.contrastMag,
+    contrastErrorMag: one.contrastErrorMag,
+    band: one.band,
+    epoch: one.observedOn,
+    reference: one.source,
+  }));
+  // A row that measures nothing would stand beside its own epochs as a second companion.
+  return epoch === null ? further : [companion, ...further];
 }
 
 type Extra = Readonly<Record<string, WrittenCell>>;

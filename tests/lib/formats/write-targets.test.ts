@@ -7,6 +7,7 @@ import {
   type WrittenTarget,
   writeTargets,
 } from '@/lib/formats';
+import { ABSENT_TARGET } from '../../support/written-target';
 
 const orNull = <T>(arbitrary: fc.Arbitrary<T>) => fc.option(arbitrary, { nil: null });
 const finite = fc.double({ noNaN: true, noDefaultInfinity: true });
@@ -93,43 +94,6 @@ function withErrors(value: number, lower: number, upper: number) {
   };
 }
 
-const absent: WrittenTarget = {
-  name: '',
-  otherNames: [],
-  gaiaDr3Id: null,
-  raDeg: null,
-  decDeg: null,
-  refEpoch: null,
-  pmRaMasYr: null,
-  pmDecMasYr: null,
-  parallaxMas: null,
-  parallaxErrorMas: null,
-  distancePc: null,
-  distanceErrorPc: null,
-  ageMyr: null,
-  ageLowerMyr: null,
-  ageUpperMyr: null,
-  ageErrorLowerMyr: null,
-  ageErrorUpperMyr: null,
-  logAgeErrorDex: null,
-  ageMinMyr: null,
-  ageMaxMyr: null,
-  hostMassMsun: null,
-  hostMassErrorMsun: null,
-  spectralType: null,
-  movingGroup: null,
-  membershipProbability: null,
-  magnitudes: {},
-  multiplicity: null,
-  binarySemiMajorAxisAu: null,
-  binaryEccentricity: null,
-  binaryMassRatio: null,
-  debrisDisk: null,
-  selectedForCompanion: null,
-  notes: null,
-  reference: null,
-};
-
 const notNegative = fc.double({ min: 0, max: Number.MAX_VALUE, noNaN: true });
 const magnitude = fc.record({ valueMag: finite, errorMag: orNull(notNegative) });
 const position = fc.oneof(
@@ -173,7 +137,7 @@ const target: fc.Arbitrary<WrittenTarget> = fc
     distance,
     age,
   )
-  .map((parts) => Object.assign({}, absent, ...parts) as WrittenTarget);
+  .map((parts) => Object.assign({}, ABSENT_TARGET, ...parts) as WrittenTarget);
 
 /** A survey never lists a name or a Gaia number twice. */
 function distinct(targets: WrittenTarget[]): WrittenTarget[] {
@@ -224,7 +188,7 @@ describe('writeTargets(targets)', { timeout: 60_000 }, () => {
     'keeps the bits of %d',
     (hostMassMsun) => {
       const [record] = readBack(
-        writeTargets([{ ...absent, name: 'RB 1', distancePc: 20, hostMassMsun }]),
+        writeTargets([{ ...ABSENT_TARGET, name: 'RB 1', distancePc: 20, hostMassMsun }]),
       );
       expect(record.hostMassMsun).toBe(hostMassMsun);
     },
@@ -232,14 +196,14 @@ describe('writeTargets(targets)', { timeout: 60_000 }, () => {
 
   it('keeps all 19 digits of a Gaia DR3 number', () => {
     const [record] = readBack(
-      writeTargets([{ ...absent, name: 'RB 1', gaiaDr3Id: '6151712717763155414' }]),
+      writeTargets([{ ...ABSENT_TARGET, name: 'RB 1', gaiaDr3Id: '6151712717763155414' }]),
     );
     expect(record.gaiaDr3Id).toBe('6151712717763155414');
   });
 
   it('leaves out columns that no target fills, and adds the ones asked for', () => {
     const text = writeTargets(
-      [{ ...absent, name: 'RB 1', distancePc: 20 }],
+      [{ ...ABSENT_TARGET, name: 'RB 1', distancePc: 20 }],
       [{ name: 'used', values: [true] }],
     );
     expect(text).toBe('name,distance,used\nRB 1,20,true\n');
@@ -247,7 +211,7 @@ describe('writeTargets(targets)', { timeout: 60_000 }, () => {
 
   it('computes age errors from the 16 and 84 % points where only those are kept', () => {
     const text = writeTargets([
-      { ...absent, name: 'RB 1', ageMyr: 40, ageLowerMyr: 30, ageUpperMyr: 55 },
+      { ...ABSENT_TARGET, name: 'RB 1', ageMyr: 40, ageLowerMyr: 30, ageUpperMyr: 55 },
     ]);
     expect(text).toBe('name,age,age_error_lower,age_error_upper\nRB 1,40,10,15\n');
   });
