@@ -152,7 +152,11 @@ export function LabFoot({ collaboration }: { collaboration: string }) {
       <span className="mx-2">·</span>
       <Link href={`/${collaboration}/activity`}>Activity</Link>
       <span className="mx-2">·</span>
+      <Link href={`/${collaboration}/exercises`}>Exercises</Link>
+      <span className="mx-2">·</span>
       <Link href={`/${collaboration}/settings`}>Settings</Link>
+      <span className="mx-2">·</span>
+      <Link href="/help">Help</Link>
       <span className="mx-2">·</span>
       <a href="/api/v1/openapi.json">API</a>
     </footer>
