@@ -17,12 +17,12 @@ import {
   RunRow,
   StudyRow,
 } from '@/models';
-import { type FinishedRun, statedRange } from '../export-limits';
+import { type FinishedRun, type ReleaseFacts, statedRange } from '../export-limits';
 import { writeMethods } from '../exports/methods';
 import { studyNames } from '../study-words';
 import { addressOfRelease } from './sign';
 
-async function showRun(runId: string): Promise<ShownRun> {
+async function showRun(runId: string, release?: ReleaseFacts): Promise<ShownRun> {
   const run = await RunRow.findByPk(runId, { rejectOnEmpty: true });
   const [frozen, analysis, population, studies] = await Promise.all([
     FrozenRunRow.findOne({
@@ -57,6 +57,7 @@ async function showRun(runId: string): Promise<ShownRun> {
     result,
     resultDigest,
     engineVersion: run.engineVersion,
+    ...(release && { release }),
   };
   const newest = new Map(studies.reverse().map((study) => [study.kind, study]));
   const { surveys, companions, cooling } = inputs;
@@ -101,6 +102,14 @@ async function neighbours(row: ReleaseRow) {
   return { replaces: ref(before), replacedBy: ref(after) };
 }
 
+/** What the words of a published release say of it; none of a draft. */
+function factsOf(row: ReleaseRow): ReleaseFacts | undefined {
+  const { publishedAt, title, number: version, licence, authors, code } = row;
+  if (!publishedAt) return undefined;
+  const year = publishedAt.getUTCFullYear();
+  return { title, version, licence, authors, year, address: addressOfRelease(code) };
+}
+
 /** The page of a release: published, or a draft for whoever holds a link to it. */
 export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
   const links = await ReleaseRunRow.findAll({
@@ -108,7 +117,9 @@ export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
     order: [['position', 'ASC']],
   });
   const runs: ShownRun[] = [];
-  if (!row.withdrawnAt) for (const { runId } of links) runs.push(await showRun(runId));
+  if (!row.withdrawnAt) {
+    for (const { runId } of links) runs.push(await showRun(runId, factsOf(row)));
+  }
   const files = row.withdrawnAt
     ? []
     : await ReleaseFileRow.findAll({
