@@ -6,6 +6,7 @@ import { populationDefinitionSchema } from './population-definitions';
 import { runResultSchema } from './runs';
 import { sampleDefinitionSchema } from './samples';
 import { mapSettingsSchema } from './sensitivity';
+import { sharedInputSchema } from './sharing';
 
 const digestSchema = z.string().regex(/^[0-9a-f]{64}$/, 'a SHA-256 in hexadecimal');
 const finite = z.number().finite();
@@ -70,6 +71,8 @@ export const bundleRecipeSchema = z.object({
   }),
   sample: z.object({ ...versionFields, definition: sampleDefinitionSchema }).nullable(),
   combination: z.object({ ...versionFields, definition: combinationDefinitionSchema }).nullable(),
+  /** Surveys of other collaborations, each with its attribution, where the run used any. */
+  shared: z.array(sharedInputSchema).optional(),
   /** Adopted ages and distances: each with its table's number. */
   adopted: z.object({
     newest: z.object({ age: z.number().nullable(), distance: z.number().nullable() }),

@@ -143,7 +143,9 @@ export async function computeBundle(
   const hostMassMsun = hostMassesFor(definition, sample.stars);
   const { seed, engineVersion } = stated.run;
   const run = { recipe: stated.recipe, seed, engineVersion };
-  return computeCollected(work, { run, population, sample, hostMassMsun, companions }, shelf, {
+  const { shared } = stated;
+  const collected = { run, population, sample, hostMassMsun, companions, shared };
+  return computeCollected(work, collected, shelf, {
     enter: report.enter,
     combined: (done, total) => report.maps(done, total),
   });

@@ -136,6 +136,7 @@ async function recipeOf(
       ...pick(combination, version),
       definition: combination.definition,
     },
+    ...(run.inputs?.shared && { shared: run.inputs.shared }),
     adopted: { newest: adopted.newest, values },
   };
 }
