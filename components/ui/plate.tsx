@@ -63,7 +63,7 @@ export function Conditions({ rows }: { rows: ConditionRow[] }) {
     <dl className="grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-[3px] text-ink2 text-note">
       {rows.map((row) => (
         <div key={row.name} className="contents">
-          <dt className="whitespace-nowrap text-ink3">
+          <dt className={`text-ink3 ${row.help === undefined ? '' : 'whitespace-nowrap'}`}>
             {row.name}
             {row.help !== undefined && <HelpMark word={row.help} />}
           </dt>
