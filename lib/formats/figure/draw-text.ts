@@ -1,4 +1,4 @@
-import type PDFDocument from 'pdfkit';
+import PDFDocument from 'pdfkit';
 import type { Stroke, TextMark, TextRun } from './drawing';
 import { type FontFile, piecesOf } from './typefaces';
 
@@ -7,6 +7,15 @@ export type FigureDocument = Omit<InstanceType<typeof PDFDocument>, 'dash'> & {
   readonly _font: { font: FontFile };
   dash(lengths: number[]): FigureDocument;
 };
+
+/** A page of a size in points, without margins. */
+export function openDocument(
+  size: [number, number],
+  info: { Title: string; Subject: string; CreationDate: Date },
+): FigureDocument {
+  // The types leave out the present font, and dashes as a list.
+  return new PDFDocument({ size, margin: 0, info }) as unknown as FigureDocument;
+}
 
 interface Placed {
   run: TextRun;

@@ -1,5 +1,4 @@
-import PDFDocument from 'pdfkit';
-import { drawText, type FigureDocument } from './draw-text';
+import { drawText, type FigureDocument, openDocument } from './draw-text';
 import type { Drawing, Hatch, Mark, ShapeMark, Stroke } from './drawing';
 
 const POINTS_PER_MM = 72 / 25.4;
@@ -13,11 +12,11 @@ const POINTS_PER_MM = 72 / 25.4;
  */
 export async function writePdf(drawing: Drawing): Promise<Uint8Array> {
   const scale = (drawing.widthMm * POINTS_PER_MM) / drawing.width;
-  const document = new PDFDocument({
-    size: [drawing.width * scale, drawing.height * scale],
-    margin: 0,
-    info: { Title: drawing.title, Subject: drawing.description, CreationDate: new Date(0) },
-  }) as FigureDocument;
+  const document = openDocument([drawing.width * scale, drawing.height * scale], {
+    Title: drawing.title,
+    Subject: drawing.description,
+    CreationDate: new Date(0),
+  });
   const parts: Uint8Array[] = [];
   const ended = new Promise<void>((resolve, reject) => {
     document.on('data', (part: Uint8Array) => parts.push(part));

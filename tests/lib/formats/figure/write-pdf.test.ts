@@ -52,6 +52,33 @@ describe('writePdf', () => {
     expect(Number(height) / Number(width)).toBeCloseTo(200 / 432, 4);
   });
 
+  it('draws every space, sign and letter that the product writes, and none that no file has', async () => {
+    const signs = [
+      '5.8\u2009%',
+      '10\u00a0AU\u202f',
+      '≤ ≥ ∝ → ←',
+      'αβμσχ²Ĉ′″×±−',
+      'Žižek Łódź Ωж',
+      '漢',
+    ];
+    const words = signs.map(
+      (sign, row) =>
+        `<text x="4" y="${20 * row + 20}" font-size="13" fill="#0b2326" paint-order="stroke" stroke="#ffffff" stroke-width="3">${sign}</text>`,
+    );
+    const pdf = await writePdf(readDrawing(figure(words.join(''))));
+    expect(Buffer.from(pdf).subarray(0, 5).toString()).toBe('%PDF-');
+  });
+
+  it('keeps the character of every glyph, those that are parts of others too', async () => {
+    const colon = figure(
+      '<text x="4" y="20" font-size="13" fill="#0b2326" paint-order="stroke" stroke="#ffffff" stroke-width="3">ij: 5.8</text>',
+    );
+    const map = contentOf(await writePdf(readDrawing(colon)));
+    expect(map).toContain('begincmap');
+    expect(map).toContain('<002e>');
+    expect(map).not.toContain('<>');
+  });
+
   it('gives the same bytes for the same drawing', async () => {
     const [one, other] = await Promise.all([0, 1].map(() => writePdf(readDrawing(everyMark))));
     expect(Buffer.compare(one, other)).toBe(0);
