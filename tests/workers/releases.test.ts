@@ -21,11 +21,9 @@ import {
   GET as getStanding,
 } from '@/app/api/v1/collaborations/[collaboration]/runs/[run]/freeze/route';
 import { POST as writeNote } from '@/app/api/v1/guest/[token]/notes/route';
-import type { RouteHandler } from '@/app/api/v1/handler';
 import { GET as getFile } from '@/app/api/v1/releases/[code]/files/[file]/route';
-import { unpackFiles } from '@/lib/formats/bundle';
-import type { Role } from '@/lib/schemas/common';
-import { freezeStandingSchema, newGuestLinkSchema, releaseSchema } from '@/lib/schemas/releases';
+import { packFiles, unpackFiles } from '@/lib/formats/bundle';
+import { freezeStandingSchema, newGuestLinkSchema } from '@/lib/schemas/releases';
 import { readAsGuest } from '@/lib/services/releases/guest-links';
 import { listImports } from '@/lib/services/releases/import-bundle';
 import { findPublicRelease } from '@/lib/services/releases/public-page';
@@ -50,62 +48,30 @@ import {
   tokenOf,
   webAddress,
 } from '../support/people';
-import { buildReleaseLab } from '../support/release-lab';
-import { buildAnalysis, recipeOf } from '../support/sample';
-import { runToEnd, untilEnded } from '../support/work';
+import { openReleaseLab, type ReleaseLab, readRelease as view } from '../support/release-lab';
+import { untilEnded } from '../support/work';
 import { bundleWorker, killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
-const roles = ['owner', 'statistician', 'collaborator', 'author', 'student'] as const;
-
-let team: TestCollaboration;
-let people: Record<Role, TestPerson>;
+let lab: ReleaseLab;
 let run: RunRow;
 let second: RunRow;
 let release: { id: string; key: string; code: string };
 let draft: Buffer;
-const tokens = new Map<string, Record<string, string>>();
 
 beforeAll(async () => {
   await startWorker(await bundleWorker('releases'), { threads: 1 });
-  const made = await createCollaborationWith(roles);
-  [team, people] = [made.collaboration, made.people];
-  const { surveys, population } = await buildReleaseLab(team, people.collaborator.id);
-  const owner = await actorOf(people.owner, team);
-  const runOf = async (level: number) => {
-    const recipe = { ...recipeOf(surveys, population), credibleLevel: level };
-    const analysis = await buildAnalysis(team.id, recipe, owner.personId);
-    const { run: made, job } = await runToEnd(owner, `A-${analysis.number}`);
-    expect([job.status, job.fault]).toEqual(['done', null]);
-    return made;
-  };
-  [run, second] = [await runOf(0.95), await runOf(0.9)];
-  for (const role of roles) tokens.set(role, bearer(await tokenOf(people[role], team)));
+  lab = await openReleaseLab();
+  ({ run, second } = lab);
 }, 60_000);
 afterAll(killWorkers);
 
-type Given = { role: Role; params?: Record<string, string>; body?: unknown; method?: string };
-
-async function ask(handler: RouteHandler, { role, params = {}, body, method }: Given) {
-  return call(handler, {
-    method: method ?? (body === undefined ? 'GET' : 'POST'),
-    headers: tokens.get(role),
-    params: { collaboration: team.slug, ...params },
-    body,
-  });
-}
-const post = (handler: RouteHandler, given: Given) => ask(handler, { method: 'POST', ...given });
-const view = async (response: Response) => {
-  const text = await response.text();
-  expect(response.status, text).toBeLessThan(300);
-  return releaseSchema.parse(JSON.parse(text));
-};
-
-async function untilChecked(): Promise<void> {
+const ask: ReleaseLab['ask'] = (handler, given) => lab.ask(handler, given);
+const post: ReleaseLab['ask'] = (handler, given) => lab.ask(handler, { method: 'POST', ...given });
+const untilChecked = async () => {
   const shown = await view(await ask(getRelease, { role: 'student', params: { release: 'R-1' } }));
-  if (!shown.job) throw new Error('nothing is being checked');
-  await untilEnded(shown.job.id);
-}
+  await untilEnded(shown.job?.id ?? 'nothing is being checked');
+};
 
 describe('freezing a run', () => {
   const params = () => ({ run: run.id });
@@ -272,9 +238,8 @@ describe('a guest link', () => {
     const token = given.address.split('/r/')[1];
     const page = await readAsGuest(token);
     expect([page.kind, page.runs.length, page.files]).toEqual(['run', 1, []]);
-    const { name, origin } = { name: 'Referee', origin: new URL(given.address).origin };
-    const note = { name, body: 'What if the start is cold?' };
-    const headers = { origin };
+    const note = { name: 'Referee', body: 'What if the start is cold?' };
+    const headers = { origin: new URL(given.address).origin };
     const left = await call(writeNote, { method: 'POST', params: { token }, headers, body: note });
     expect(left.status).toBe(201);
     expect((await readAsGuest(token)).guest.notes.map(({ body: text }) => text)).toEqual([
@@ -309,13 +274,10 @@ describe('withdrawal', () => {
     const other = await createCollaborationWith(['owner']);
     const headers = bearer(await tokenOf(other.people.owner, other.collaboration));
     const own = { collaboration: other.collaboration.slug };
-    const foreign = [
-      await call(getRelease, { headers, params: { ...own, release: release.id } }),
-      await call(getRelease, { headers, params: { ...own, release: 'R-1' } }),
-      await call(getStanding, { headers, params: { ...own, run: run.id } }),
-      await call(getBundle, { headers, params: { ...own, run: run.id } }),
-    ];
-    expect(foreign.map(({ status }) => status)).toEqual([404, 404, 404, 404]);
+    for (const handler of [getRelease, getStanding, getBundle]) {
+      const params = { ...own, release: release.id, run: run.id };
+      expect((await call(handler, { headers, params })).status).toBe(404);
+    }
     const list = await call(listReleases, { headers, params: own });
     expect(await list.json()).toEqual({ releases: [] });
   });
@@ -376,7 +338,6 @@ describe('a bundle', () => {
 
   it('refuses one in which a number was changed', async () => {
     const other = await createCollaborationWith(['owner']);
-    const { packFiles } = await import('@/lib/formats/bundle');
     const files = await unpackFiles(draft);
     const path = [...files.keys()].find((name) => name.endsWith('inputs/curves.json')) as string;
     const text = files.get(path)?.toString('utf8').replace('11.5', '12.5') ?? '';
