@@ -16,7 +16,6 @@ create table note (
   parent_id uuid,
   body text not null check (length(body) <= 4000),
   created_by uuid references person(id) on delete set null,
-  guest_name text check (length(guest_name) between 1 and 100),
   created_at timestamptz not null default now(),
   edited_at timestamptz,
   removed_at timestamptz,
@@ -26,7 +25,6 @@ create table note (
   constraint note_on_one_item
     check (num_nonnulls(survey_id, star_id, analysis_id, run_id, companion_id) = 1),
   check ((removed_at is null) = (body <> '')),
-  check (created_by is null or guest_name is null),
   check (parent_id is null or resolved_at is null),
   check (resolved_by is null or resolved_at is not null),
   foreign key (survey_id, collaboration_id) references survey(id, collaboration_id) on delete cascade,

@@ -19,8 +19,6 @@ export class NoteRow extends Model<InferAttributes<NoteRow>, InferCreationAttrib
   declare parentId: CreationOptional<string | null>;
   declare body: string;
   declare createdBy: CreationOptional<string | null>;
-  /** Of somebody without an account, who holds a link. */
-  declare guestName: CreationOptional<string | null>;
   declare createdAt: CreationOptional<Date>;
   declare editedAt: CreationOptional<Date | null>;
   declare removedAt: CreationOptional<Date | null>;
@@ -41,7 +39,6 @@ export function defineNote(sequelize: Sequelize): void {
       parentId: DataTypes.UUID,
       body: DataTypes.TEXT,
       createdBy: DataTypes.UUID,
-      guestName: DataTypes.TEXT,
       createdAt: DataTypes.DATE,
       editedAt: DataTypes.DATE,
       removedAt: DataTypes.DATE,

@@ -1,6 +1,7 @@
 import { beat, buryDeadWorkers, signOff, sweep } from '@/lib/queue/heartbeat';
 import { HEARTBEAT_MS } from '@/lib/queue/lease';
 import { describeError, log } from './log';
+import { tellOfEnd } from './run-mail';
 
 /** Looks for the dead twice as often as it beats, so that a second attempt starts soon. */
 const WATCH_MS = HEARTBEAT_MS / 2;
@@ -25,7 +26,9 @@ export async function startHeart(workerIds: () => string[], processId: string): 
       }
       const dead = await buryDeadWorkers();
       if (dead.length > 0) log('warning', 'workers found dead', { workers: dead });
-      const { requeued, ended } = await sweep();
+      const { requeued, ended } = await sweep((transaction, jobId) =>
+        tellOfEnd(transaction, jobId, 'failed'),
+      );
       if (requeued.length + ended.length > 0) log('warning', 'jobs swept', { requeued, ended });
     } catch (error) {
       log('warning', 'heartbeat missed', describeError(error));

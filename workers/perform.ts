@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import { LabError } from '@/lib/errors';
 import {
   type Attempt,
@@ -13,6 +14,7 @@ import { MAX_ATTEMPTS } from '@/lib/queue/lease';
 import { inTransaction } from '@/models';
 import { describeError, log } from './log';
 import { type ComputePool, ThreadFault } from './pool';
+import { tellOfEnd } from './run-mail';
 
 /** Renewals come more often than the lease asks for, because they also bring the wish to stop. */
 const RENEW_MS = 2000;
@@ -87,6 +89,9 @@ function keepAlive(attempt: Attempt, stop: AbortController): void {
     });
 }
 
+const tellOfFailure = (jobId: string) => (transaction: Transaction) =>
+  tellOfEnd(transaction, jobId, 'failed');
+
 async function conclude(attempt: Attempt, error: unknown): Promise<void> {
   const { jobId } = attempt;
   if (error instanceof LeaseLost) throw error;
@@ -103,10 +108,11 @@ async function conclude(attempt: Attempt, error: unknown): Promise<void> {
   }
   if (error instanceof LabError || error instanceof ThreadFault) {
     log('info', 'job failed', { jobId, fault: error.message });
-    await fail(attempt, error.message);
+    await fail(attempt, error.message, tellOfFailure(jobId));
     return;
   }
   log('error', 'job stopped', { jobId, attempt: attempt.number, ...describeError(error) });
-  if (attempt.number >= MAX_ATTEMPTS) await fail(attempt, STOPPED_TOO_OFTEN);
-  else await giveBack(attempt, true);
+  if (attempt.number >= MAX_ATTEMPTS) {
+    await fail(attempt, STOPPED_TOO_OFTEN, tellOfFailure(jobId));
+  } else await giveBack(attempt, true);
 }

@@ -44,7 +44,6 @@ function Note({ collaboration, note, actions, tools }: NoteProps) {
         <b className="font-semibold">
           <bdi>{author.name}</bdi>
         </b>
-        {author.isGuest && <span className="text-ink3">guest</span>}
         <time dateTime={note.at} className="text-ink3">
           {moment(note.at)}
         </time>

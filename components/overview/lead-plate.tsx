@@ -5,6 +5,7 @@ import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Icon } from '@/components/ui/icon';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
+import { useMoment } from '@/components/ui/time-zone';
 import {
   describeLevel,
   describePlanet,
@@ -16,14 +17,6 @@ import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { Overview } from '@/lib/schemas/overview';
 
-const dateOf = (moment: string) =>
-  new Date(moment).toLocaleDateString('en-GB', {
-    day: 'numeric',
-    month: 'long',
-    year: 'numeric',
-    timeZone: 'UTC',
-  });
-
 /** The lead analysis as a sentence, and how its limit has moved. */
 export function LeadPlate({
   collaboration,
@@ -34,6 +27,7 @@ export function LeadPlate({
   overview: Overview;
   lead: AnalysisView;
 }) {
+  const moment = useMoment();
   const run = lead.runs.find((one) => one.limit !== null);
   const { definition } = lead.population;
   if (!run || run.limit === null || run.quantity === null) return null;
@@ -45,7 +39,8 @@ export function LeadPlate({
       <div className="grid gap-x-12 gap-y-6 lg:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
         <div>
           <p className="text-[14px] text-ink3">
-            Lead analysis, {lead.key}, run {run.number} of {dateOf(run.finishedAt ?? run.createdAt)}
+            Lead analysis, {lead.key}, run {run.number} of
+            {moment(run.finishedAt ?? run.createdAt, 'day')}
             <HelpMark word="upper-limit" />
           </p>
           <StatementNumber

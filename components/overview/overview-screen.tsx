@@ -9,20 +9,12 @@ import { Icon } from '@/components/ui/icon';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
+import { useMoment, useTimeZone } from '@/components/ui/time-zone';
 import type { FirstStep } from '@/lib/schemas/first-steps';
 import type { Overview } from '@/lib/schemas/overview';
 import { ExampleFiles, FirstSteps } from './first-steps';
 import { LeadPlate } from './lead-plate';
 import { OverlapChart } from './overlap-chart';
-
-const timeOf = (moment: string) =>
-  new Date(moment).toLocaleString('en-GB', {
-    day: 'numeric',
-    month: 'short',
-    hour: '2-digit',
-    minute: '2-digit',
-    timeZone: 'UTC',
-  });
 
 function Waiting({ waiting }: { waiting: Overview['waiting'] }) {
   if (waiting.length === 0) return <p className="py-2 text-ink3">Nothing waits for a person.</p>;
@@ -51,6 +43,7 @@ function Waiting({ waiting }: { waiting: Overview['waiting'] }) {
 }
 
 function Log({ log }: { log: Overview['log'] }) {
+  const moment = useMoment();
   if (log.length === 0) return <p className="py-2 text-ink3">Nothing has happened yet.</p>;
   return (
     <ul>
@@ -59,7 +52,7 @@ function Log({ log }: { log: Overview['log'] }) {
           key={`${entry.at}-${entry.what}`}
           className="grid grid-cols-[104px_1fr] gap-x-2 py-1 text-[14px]"
         >
-          <span className="whitespace-nowrap text-ink3">{timeOf(entry.at)}</span>
+          <span className="whitespace-nowrap text-ink3">{moment(entry.at)}</span>
           <span className="min-w-0 break-words">
             <b className="font-semibold">{entry.who}</b> {entry.what}
           </span>
@@ -83,6 +76,7 @@ export function OverviewScreen({
   /** There is a collaboration of invented data besides this one. */
   hasDemonstration: boolean;
 }) {
+  const timeZone = useTimeZone();
   const { data: overview = initial } = useOverview(collaboration, initial);
   const { surveys: list, analyses, can } = overview;
   const lead = analyses.find((analysis) => analysis.key === overview.lead);
@@ -178,7 +172,11 @@ export function OverviewScreen({
               </p>
             </section>
             <section>
-              <SectionOpener title="Log" context="UTC" />
+              <SectionOpener
+                title="Log"
+                context={timeZone}
+                tools={<Link href={`${base}/activity`}>All activity</Link>}
+              />
               <Log log={overview.log} />
             </section>
           </div>

@@ -6,6 +6,7 @@ import { resendInvitation, revokeInvitation, useInvitations } from '@/components
 import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
+import { useMoment } from '@/components/ui/time-zone';
 import type { Role } from '@/lib/schemas/common';
 import type { InvitationView } from '@/lib/schemas/people';
 import { InviteForm } from './invite-form';
@@ -18,9 +19,6 @@ interface InvitationPanelProps {
   offered: readonly Role[];
 }
 
-const dayOf = (moment: string) =>
-  new Date(moment).toLocaleDateString('en-GB', { day: 'numeric', month: 'long', timeZone: 'UTC' });
-
 function mailWords(mail: InvitationView['mail']) {
   if (mail === 'failed') return <span className="block text-bad">its message did not arrive</span>;
   return mail === 'waiting' ? (
@@ -31,6 +29,7 @@ function mailWords(mail: InvitationView['mail']) {
 /** Invites by e-mail, and shows what became of earlier invitations. */
 export function InvitationPanel({ collaboration, initial, offered }: InvitationPanelProps) {
   const { data: invitations = initial, mutate } = useInvitations(collaboration, initial);
+  const moment = useMoment();
   const [refusal, setRefusal] = useState<string | null>(null);
   const [sentTo, setSentTo] = useState<string | null>(null);
   const attempt = async (work: () => Promise<unknown>, sent: string | null) => {
@@ -84,7 +83,7 @@ export function InvitationPanel({ collaboration, initial, offered }: InvitationP
                 <Cell>{invitation.invitedBy ?? '–'}</Cell>
                 <Cell>
                   {invitation.state === 'pending'
-                    ? `open until ${dayOf(invitation.expiresAt)}`
+                    ? `open until ${moment(invitation.expiresAt, 'day')}`
                     : invitation.state}
                   {invitation.state === 'pending' && mailWords(invitation.mail)}
                 </Cell>

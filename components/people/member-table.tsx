@@ -8,17 +8,10 @@ import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
+import { useMoment } from '@/components/ui/time-zone';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import type { MemberView } from '@/lib/schemas/people';
 import { RoleFields, roleWords } from './role-fields';
-
-const dateOf = (moment: string) =>
-  new Date(moment).toLocaleDateString('en-GB', {
-    day: 'numeric',
-    month: 'short',
-    year: 'numeric',
-    timeZone: 'UTC',
-  });
 
 interface RoleDialogProps {
   collaboration: string;
@@ -82,6 +75,7 @@ export function MemberTable({
   initial: MemberView[];
 }) {
   const { data: members = initial, mutate } = useMembers(collaboration, initial);
+  const moment = useMoment();
   const [chosen, setChosen] = useState<MemberView | null>(null);
   return (
     <>
@@ -111,7 +105,9 @@ export function MemberTable({
                 {member.roles.map((role) => roleWords[role]).join(', ')}
               </Cell>
               <Cell className="max-md:hidden">{member.leads.join(', ') || '–'}</Cell>
-              <Cell className="whitespace-nowrap max-md:hidden">{dateOf(member.joinedAt)}</Cell>
+              <Cell className="whitespace-nowrap max-md:hidden">
+                {moment(member.joinedAt, 'day')}
+              </Cell>
               <Cell>
                 {member.can.changeRoles && (
                   <TextAction onClick={() => setChosen(member)}>

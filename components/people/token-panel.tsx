@@ -7,19 +7,10 @@ import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
+import { useMoment } from '@/components/ui/time-zone';
 import { announce } from '@/components/ui/toast-store';
 import type { TokenView } from '@/lib/schemas/people';
 import { TokenForm } from './token-form';
-
-const dayOf = (moment: string | null) =>
-  moment === null
-    ? 'never'
-    : new Date(moment).toLocaleDateString('en-GB', {
-        day: 'numeric',
-        month: 'short',
-        year: 'numeric',
-        timeZone: 'UTC',
-      });
 
 /** Tokens of this person for scripts; a new one is shown once. */
 export function TokenPanel({
@@ -33,6 +24,8 @@ export function TokenPanel({
   initial: TokenView[];
 }) {
   const { data: tokens = initial, mutate } = useTokens(collaboration, initial);
+  const moment = useMoment();
+  const dayOf = (at: string | null) => (at === null ? 'never' : moment(at, 'day'));
   const [made, setMade] = useState<string | null>(null);
   const [refusal, setRefusal] = useState<string | null>(null);
   const attempt = async (work: () => Promise<void>) => {

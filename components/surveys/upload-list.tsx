@@ -6,18 +6,9 @@ import { useUploads } from '@/components/hooks/use-uploads';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
+import { useMoment } from '@/components/ui/time-zone';
 import type { UploadView } from '@/lib/schemas/uploads';
 import { WithdrawDialog } from './withdraw-dialog';
-
-const when = (moment: string) =>
-  new Date(moment).toLocaleString('en-GB', {
-    day: 'numeric',
-    month: 'short',
-    year: 'numeric',
-    hour: '2-digit',
-    minute: '2-digit',
-    timeZone: 'UTC',
-  });
 
 const kindWords: Record<UploadView['kind'], string> = {
   targets: 'targets',
@@ -29,13 +20,14 @@ const kindWords: Record<UploadView['kind'], string> = {
 };
 
 function StateOf({ upload }: { upload: UploadView }) {
+  const moment = useMoment();
   if (upload.state === 'stored') return <StateMark kind="ok">stored</StateMark>;
   if (upload.state === 'read') return <StateMark kind="draft">read, not stored</StateMark>;
   const by = upload.withdrawnBy === null ? '' : ` by ${upload.withdrawnBy}`;
   return (
     <StateMark kind="stopped">
       withdrawn{by}
-      {upload.withdrawnAt !== null && `, ${when(upload.withdrawnAt)}`}
+      {upload.withdrawnAt !== null && `, ${moment(upload.withdrawnAt, 'full')}`}
     </StateMark>
   );
 }
@@ -51,6 +43,7 @@ interface UploadListProps {
 
 /** The files that the survey was made from, each with its fingerprint and its original bytes. */
 export function UploadList(props: UploadListProps) {
+  const moment = useMoment();
   const { collaboration, survey, canWithdraw, onChanged } = props;
   const { data: uploads = props.uploads, mutate } = useUploads(
     collaboration,
@@ -102,7 +95,9 @@ export function UploadList(props: UploadListProps) {
               </Cell>
               <Cell>{upload.report.summary}</Cell>
               <Cell className="whitespace-nowrap">{upload.uploadedBy ?? '–'}</Cell>
-              <Cell className="whitespace-nowrap">{when(upload.storedAt ?? upload.createdAt)}</Cell>
+              <Cell className="whitespace-nowrap">
+                {moment(upload.storedAt ?? upload.createdAt, 'full')}
+              </Cell>
               <Cell>
                 <StateOf upload={upload} />
               </Cell>

@@ -144,12 +144,21 @@ export function complete(transaction: Transaction, attempt: Attempt): Promise<vo
   return end(attempt, `status = 'done', finished_at = now(), fault = null`, [], transaction);
 }
 
-/** Ends the job with a sentence that a person may read. */
-export function fail(attempt: Attempt, fault: string): Promise<void> {
+/**
+ * Ends the job with a sentence that a person may read.
+ *
+ * @param also what else belongs into the same transaction
+ */
+export function fail(
+  attempt: Attempt,
+  fault: string,
+  also?: (transaction: Transaction) => Promise<void>,
+): Promise<void> {
   return inTransaction(async (transaction) => {
     const change = `status = 'failed', finished_at = now(), fault = $3`;
     await end(attempt, change, [fault], transaction);
     await forgetWaitingMaps(transaction, attempt.jobId);
+    await also?.(transaction);
   });
 }
 

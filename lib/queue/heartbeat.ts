@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import { inTransaction } from '@/models';
 import { forgetWaitingMaps } from './cancel';
 import { deliver } from './enqueue';
@@ -77,8 +78,14 @@ const STRANDED = `
       where q.payload->>'jobId' = j.id::text and (q.locked_at is not null or q.attempts < q.max_attempts))
   for update of j skip locked`;
 
-/** Queues stranded jobs again, or ends those that were cancelled or have had their attempts. */
-export function sweep(): Promise<{ requeued: string[]; ended: string[] }> {
+/**
+ * Queues stranded jobs again, or ends those that were cancelled or have had their attempts.
+ *
+ * @param onFailed what else belongs into the transaction in which a job fails
+ */
+export function sweep(
+  onFailed?: (transaction: Transaction, jobId: string) => Promise<void>,
+): Promise<{ requeued: string[]; ended: string[] }> {
   return inTransaction(async (transaction) => {
     const requeued: string[] = [];
     const ended: string[] = [];
@@ -103,6 +110,7 @@ export function sweep(): Promise<{ requeued: string[]; ended: string[] }> {
       } else {
         ended.push(job.id);
         await forgetWaitingMaps(transaction, job.id);
+        if (status === 'failed') await onFailed?.(transaction, job.id);
       }
     }
     return { requeued, ended };

@@ -54,7 +54,7 @@ const noteFields = {
   /** Null once the note was removed. */
   body: z.string().nullable(),
   mentions: z.array(personRefSchema),
-  author: z.object({ id: idSchema.nullable(), name: z.string(), isGuest: z.boolean() }),
+  author: z.object({ id: idSchema.nullable(), name: z.string() }),
   at: moment,
   editedAt: moment.nullable(),
   /** Written by somebody else since this person last read the notes here. */

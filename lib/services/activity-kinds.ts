@@ -14,16 +14,18 @@ const newsOf: Record<ActivityKind, readonly string[]> = {
     'copy-analysis',
     'run-analysis',
     'remove-analysis',
+    'import-bundle',
     'finish-run',
   ],
   notes: ['write-note', 'settle-note'],
   releases: [
-    'ask-freeze',
     'freeze-run',
-    'ask-agreement',
+    'save-release',
+    'sign-off-release',
     'agree-release',
     'publish-release',
     'withdraw-release',
+    'link-guest',
   ],
   people: [
     'create-collaboration',
@@ -46,6 +48,7 @@ const guarded: Record<string, Action> = {
   'change-roles': 'change-roles',
   'remove-member': 'change-roles',
   'change-settings': 'manage-collaboration',
+  'link-guest': 'link-guest',
 };
 
 const kindOfAction = new Map(
@@ -57,7 +60,7 @@ const kindOfAction = new Map(
 export const kindOf = (action: string): ActivityKind => kindOfAction.get(action) ?? 'surveys';
 
 /** Actions that the actor may read news of. */
-export function newsFor(actor: Actor, kind?: ActivityKind): string[] {
+export function newsFor(actor: Pick<Actor, 'roles'>, kind?: ActivityKind): string[] {
   const actions = kind === undefined ? [...kindOfAction.keys()] : [...newsOf[kind]];
   // An archive keeps its readers: what they may read follows from their roles alone.
   const reader = { roles: actor.roles };

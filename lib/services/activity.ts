@@ -1,13 +1,16 @@
 import { QueryTypes } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
-import { demand, may } from '@/lib/access/permissions';
+import { demand } from '@/lib/access/permissions';
 import { InputError } from '@/lib/errors';
 import { type ActivityPage, type ActivityQuery, activityPageSchema } from '@/lib/schemas/activity';
+import type { Role } from '@/lib/schemas/common';
 import { database } from '@/models';
 import { kindOf, newsFor } from './activity-kinds';
 import { nameItems } from './item-names';
 
 const EXCERPT_LENGTH = 160;
+/** Whom a new release asks for a signature. */
+const SIGNERS: readonly Role[] = ['owner', 'author', 'statistician'];
 
 interface Fields {
   id: string;
@@ -19,7 +22,6 @@ interface Fields {
   itemKind: string;
   itemId: string;
   what: string;
-  isGuest: boolean | null;
   body: string | null;
 }
 
@@ -27,13 +29,13 @@ interface Fields {
 const EVENTS = `
   select 'log-' || lpad(a.id::text, 20, '0') as id, a.created_at as at, a.person_id, a.action,
     a.item_kind, a.item_id, a.summary as what, (a.details->>'noteId')::uuid as note_id,
-    a.details->>'isProposal' = 'true' as is_proposal, a.details->>'via' = 'link' as is_guest
+    a.details->>'isProposal' = 'true' as is_proposal
   from audit_entry a
   where a.collaboration_id = $1 and a.action = any($2::text[]) and a.summary <> ''
   union all
   select 'run-' || r.id, j.finished_at, null, 'finish-run', 'run', r.id::text,
     'Run ' || r.number || ' of A-' || n.number
-      || case j.status when 'done' then ' has finished' else ' failed' end, null, false, false
+      || case j.status when 'done' then ' has finished' else ' failed' end, null, false
   from run r join job j on j.id = r.job_id join analysis n on n.id = r.analysis_id
   where r.collaboration_id = $1 and 'finish-run' = any($2::text[])
     and j.status in ('done', 'failed') and j.finished_at is not null`;
@@ -53,7 +55,7 @@ const FOR_ME = `(e.person_id is distinct from $3::uuid and (
         and (o.id = n.parent_id or o.parent_id = n.parent_id))))
   or (e.is_proposal and exists (select 1 from companion c join target t on t.id = c.target_id
     join survey s on s.id = t.survey_id where c.id::text = e.item_id and s.lead_id = $3::uuid))
-  or (e.action in ('ask-freeze', 'ask-agreement') and $4::boolean))
+  or (e.action = 'save-release' and $4::boolean))
   or (e.action = 'finish-run' and exists (
     select 1 from run r where r.id::text = e.item_id and r.created_by = $3::uuid)))`;
 
@@ -89,7 +91,7 @@ export async function listActivity(actor: Actor, query: ActivityQuery): Promise<
   const rows = await database().query<Fields>(
     `select e.id, e.at, to_char(e.at at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"') as stamp,
        e.person_id as "personId", p.name, e.action, e.item_kind as "itemKind",
-       e.item_id as "itemId", e.what, e.is_guest as "isGuest", n.body
+       e.item_id as "itemId", e.what, n.body
      from (${EVENTS}) e left join person p on p.id = e.person_id
        left join note n on n.id = e.note_id and n.collaboration_id = $1
      where ($5::boolean is false or ${FOR_ME})
@@ -101,7 +103,7 @@ export async function listActivity(actor: Actor, query: ActivityQuery): Promise<
         actor.collaborationId,
         newsFor(actor, query.kind),
         actor.personId,
-        may(actor, 'freeze-run'),
+        actor.roles.some((role) => SIGNERS.includes(role)),
         query.for === 'me',
         query.person ?? null,
         query.item ?? null,
@@ -134,8 +136,8 @@ export async function listActivity(actor: Actor, query: ActivityQuery): Promise<
   });
 }
 
-/** Nobody where the words alone are the sentence: a run that ended, a guest whom they name. */
-function personOf({ personId, name, action, isGuest }: Fields) {
-  if (action === 'finish-run' || isGuest) return null;
+/** Nobody where the words alone are the sentence: a run that ended. */
+function personOf({ personId, name, action }: Fields) {
+  if (action === 'finish-run') return null;
   return { id: personId, name: name ?? 'somebody who left' };
 }

@@ -12,9 +12,10 @@ import {
 import { AuditEntryRow, database, inTransaction } from '@/models';
 import { nameItems } from './item-names';
 
-/** Whom an entry is about: a member within a collaboration, a person outside of any, a guest. */
+/** Whom an entry is about: a member within a collaboration, or a person outside of any. */
 export type AuditActor = {
-  personId: string | null;
+  personId: string;
+  /** `link`: whoever opened a link in a message that was sent to the person. */
   via: Actor['via'] | 'link';
 } & Partial<Pick<Actor, 'collaborationId' | 'sessionId' | 'tokenId' | 'address'>>;
 
@@ -82,8 +83,7 @@ async function readEntries(
 ): Promise<AuditEntryView[]> {
   const rows = await database().query<Omit<AuditEntryView, 'at'> & { at: Date }>(
     `select a.id::text as id, a.created_at as at,
-            coalesce(p.name, case when a.details->>'via' = 'link' then 'a guest'
-              else 'somebody who left' end) as who,
+            coalesce(p.name, 'somebody who left') as who,
             a.person_id as "personId", a.action, a.item_kind as "itemKind", a.item_id as "itemId",
             a.summary, a.address, a.details
        from audit_entry a left join person p on p.id = a.person_id

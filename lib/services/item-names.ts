@@ -38,6 +38,10 @@ const byId: Record<string, string> = {
       '/analyses/A-' || a.number as path
     from study f join run r on r.id = f.run_id join analysis a on a.id = r.analysis_id
     where f.collaboration_id = $1 and f.id = any($2::uuid[])`,
+  release: `select id, 'R-' || number as label, '/releases/R-' || number as path
+    from release where collaboration_id = $1 and id = any($2::uuid[])`,
+  exercise: `select id, 'E-' || number as label, '/exercises/E-' || number as path
+    from exercise where collaboration_id = $1 and id = any($2::uuid[])`,
   'value-table': `select id, 'table ' || number || ' of ' || quantity || 's' as label,
       '/stars/ages' as path
     from value_table where collaboration_id = $1 and id = any($2::uuid[])`,

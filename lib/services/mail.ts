@@ -28,11 +28,7 @@ export async function getMailPreferences(person: KnownPerson): Promise<MailPrefe
   });
 }
 
-async function change(
-  actor: AuditActor & { personId: string },
-  kind: MailPreference,
-  isWanted: boolean,
-): Promise<void> {
+async function change(actor: AuditActor, kind: MailPreference, isWanted: boolean): Promise<void> {
   await inTransaction(async (transaction) => {
     if (!(await setWanted(actor.personId, kind, isWanted, transaction))) return;
     const item = { kind: 'person', id: actor.personId };

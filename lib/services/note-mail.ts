@@ -8,8 +8,7 @@ interface WrittenNote {
   /** The note that began the thread; null for one that begins its own. */
   threadId: string | null;
   collaborationId: string;
-  /** Null for a guest. */
-  authorId: string | null;
+  authorId: string;
   authorName: string;
   mentionIds: readonly string[];
 }

@@ -17,7 +17,6 @@ interface Fields {
   body: string;
   authorId: string | null;
   author: string | null;
-  guest: string | null;
   at: Date;
   editedAt: Date | null;
   removedAt: Date | null;
@@ -33,7 +32,7 @@ const SOMEBODY = 'somebody who left';
 function readNotes(actor: Actor, item: FoundItem): Promise<Fields[]> {
   return database().query<Fields>(
     `select n.id, n.parent_id as "parentId", n.body, n.created_by as "authorId", p.name as author,
-       n.guest_name as guest, n.created_at as at, n.edited_at as "editedAt",
+       n.created_at as at, n.edited_at as "editedAt",
        n.removed_at as "removedAt", n.resolved_at as "resolvedAt", r.name as "resolvedBy",
        n.removed_at is null and n.created_by is distinct from $2::uuid
          and n.created_at > coalesce(v.seen_at, m.created_at, 'infinity') as "isNew",
@@ -61,8 +60,7 @@ function describeNote(row: Fields, actor: Actor, canWrite: boolean): NoteReply {
     mentions: isRemoved ? [] : row.mentions,
     author: {
       id: row.authorId,
-      name: row.author ?? row.guest ?? SOMEBODY,
-      isGuest: row.guest !== null,
+      name: row.author ?? SOMEBODY,
     },
     at: row.at.toISOString(),
     editedAt: row.editedAt?.toISOString() ?? null,

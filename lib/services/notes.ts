@@ -138,37 +138,6 @@ export async function writeNote(actor: Actor, input: WriteNote): Promise<NoteLis
   return listNotes(actor, input.on);
 }
 
-/** A note by somebody without an account, who holds a link to the thing; the caller checks the link. */
-export async function writeGuestNote(
-  guest: { collaborationId: string; name: string; address?: string },
-  on: NoteItem,
-  body: string,
-): Promise<void> {
-  const { collaborationId, name } = guest;
-  await inTransaction(async (transaction) => {
-    const item = await findItem(collaborationId, on, transaction);
-    const note = await NoteRow.create(
-      { collaborationId, [modelFields[item.kind]]: item.id, body, guestName: name },
-      { transaction },
-    );
-    await tellOfNote(
-      {
-        id: note.id,
-        threadId: null,
-        collaborationId,
-        authorId: null,
-        authorName: name,
-        mentionIds: [],
-      },
-      item,
-      transaction,
-    );
-    const actor = { personId: null, via: 'link', collaborationId, address: guest.address } as const;
-    const words = `${name}, a guest, wrote a note on`;
-    await audit(actor, 'write-note', words, note, item, transaction);
-  });
-}
-
 async function audit(
   actor: Parameters<typeof recordAudit>[0],
   action: string,

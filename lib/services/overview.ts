@@ -7,6 +7,7 @@ import type { JobView } from '@/lib/schemas/jobs';
 import type { Overview } from '@/lib/schemas/overview';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import { CollaborationRow, database, JobRow, MemberRow } from '@/models';
+import { newsFor } from './activity-kinds';
 import { listAnalyses } from './analyses';
 import { describeJobs } from './jobs';
 import { leadOf } from './lead-analysis';
@@ -122,33 +123,17 @@ async function openJobs(collaborationId: string): Promise<JobView[]> {
   return describeJobs(rows);
 }
 
-function readLog(collaborationId: string) {
+/** Newest work, as every member may read it; who was invited or removed stands under Activity. */
+function readLog(actor: Actor) {
   return database().query<{ at: Date; who: string; what: string }>(
     `select a.created_at as at, coalesce(p.name, 'somebody who left') as who, a.summary as what
      from audit_entry a left join person p on p.id = a.person_id
      where a.collaboration_id = $1 and a.summary <> ''
        and a.action = any($2::text[])
      order by a.created_at desc, a.id desc limit $3`,
-    { bind: [collaborationId, EVERYBODYS_NEWS, LOG_LENGTH], type: QueryTypes.SELECT },
+    { bind: [actor.collaborationId, newsFor({ roles: [] }), LOG_LENGTH], type: QueryTypes.SELECT },
   );
 }
-
-/** Work on the science, which every member may read; who was invited or removed is the owners'. */
-const EVERYBODYS_NEWS = [
-  'create-survey',
-  'change-survey',
-  'import',
-  'import-cooling-table',
-  'save-population',
-  'share-population',
-  'save-analysis',
-  'copy-analysis',
-  'run-analysis',
-  'remove-analysis',
-  'vet',
-  'offer-survey',
-  'accept-survey',
-];
 
 /** Where a collaboration stands, and what waits for a person. */
 export async function getOverview(actor: Actor): Promise<Overview> {
@@ -159,7 +144,7 @@ export async function getOverview(actor: Actor): Promise<Overview> {
     listSurveys(actor),
     listAnalyses(actor),
     openJobs(collaborationId),
-    readLog(collaborationId),
+    readLog(actor),
   ]);
   const lead = leadOf(analyses, row.settings);
   const [history, candidates, sharing] = await Promise.all([

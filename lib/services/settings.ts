@@ -151,17 +151,14 @@ async function applyChange(
   else if (leadAnalysis) stored.leadAnalysisId = (await findAnalysis(actor, leadAnalysis)).id;
   if (two === null) delete stored.needsTwoPeople;
   else if (two !== undefined) stored.needsTwoPeople = two;
-  if (isArchived !== undefined) {
-    row.archivedAt = isArchived ? (row.archivedAt ?? new Date()) : null;
-  }
+  const archivedAt =
+    isArchived === undefined ? row.archivedAt : isArchived ? (row.archivedAt ?? new Date()) : null;
   if (slug !== undefined && slug !== row.slug && isReserved(slug)) {
     throw new Conflict(NOT_FREE, 'address-taken');
   }
   await row.update(
-    { name: name ?? row.name, slug: slug ?? row.slug, settings: { ...stored } },
-    {
-      transaction,
-    },
+    { name: name ?? row.name, slug: slug ?? row.slug, settings: { ...stored }, archivedAt },
+    { transaction },
   );
 }
 

@@ -11,6 +11,7 @@ import { database, inTransaction, PopulationRow, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { AnswerRunInput, AnswerRunOutput } from '../compute/answer-run';
 import type { Work } from '../perform';
+import { tellOfEnd } from '../run-mail';
 import { type MapShelf, tableShelf } from './map-shelf';
 import { treatCandidates, warnCutAndCounted } from './run-candidates';
 import { type MergedCompanions, mergeCompanions } from './run-companions';
@@ -220,6 +221,7 @@ async function store(
     await storeRunStars(attempt.collaborationId, run.id, inputs, completenessPerStar, transaction);
     await reportProgress(attempt, 'store', 1, 1, transaction);
     await complete(transaction, attempt);
+    await tellOfEnd(transaction, attempt.jobId, 'finished');
   });
 }
 

@@ -5,6 +5,7 @@ import type { StudyKind } from '@/lib/schemas/study-settings';
 import { inTransaction, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { Work } from '../perform';
+import { tellOfEnd } from '../run-mail';
 import { performCalibration } from './study-calibration';
 import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
@@ -77,5 +78,6 @@ async function store(given: StudyWork, result: StudyResult): Promise<void> {
     );
     await reportProgress(work.attempt, 'store', 1, 1, transaction);
     await complete(transaction, work.attempt);
+    await tellOfEnd(transaction, work.attempt.jobId, 'finished');
   });
 }

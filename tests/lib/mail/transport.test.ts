@@ -85,6 +85,10 @@ describe('a letter', () => {
     },
   );
 
+  it('has a sample of every kind above', () => {
+    expect(Object.keys(samples).sort()).toEqual(Object.keys(mailKinds).sort());
+  });
+
   it('links to this server only', () => {
     const { schema } = mailKinds.mention;
     for (const path of [
