@@ -1,5 +1,5 @@
 import { describeFault, type Fault, type RefusedFile } from '@/lib/errors';
-import { type Problem, problemSchema } from '@/lib/schemas/problem';
+import type { Problem } from '@/lib/schemas/problem';
 
 /** A refused request as a screen shows it: sentences, and the places of all faults. */
 export class ApiProblem extends Error {
@@ -33,6 +33,7 @@ export class ApiProblem extends Error {
 /** The problem document of a refused answer; a body of another kind still gives a sentence. */
 export async function readProblem(response: Response): Promise<ApiProblem> {
   const body: unknown = await response.json().catch(() => null);
+  const { problemSchema } = await import('@/lib/schemas/problem');
   const parsed = problemSchema.safeParse(body);
   if (parsed.success) return new ApiProblem(parsed.data);
   return new ApiProblem({

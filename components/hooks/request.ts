@@ -10,6 +10,9 @@ export interface RequestOptions {
   signal?: AbortSignal;
 }
 
+/** A schema, or what loads it: asked for at the same time as the answer that it reads. */
+export type AnswerSchema<T> = ZodType<T> | (() => Promise<ZodType<T>>);
+
 /**
  * Asks the server and reads the answer by its schema.
  *
@@ -17,11 +20,14 @@ export interface RequestOptions {
  */
 export async function request<T>(
   path: string,
-  schema: ZodType<T>,
+  schema: AnswerSchema<T>,
   options: RequestOptions = {},
 ): Promise<T> {
-  const response = await send(path, options);
-  const parsed = schema.safeParse(await response.json());
+  const [response, reader] = await Promise.all([
+    send(path, options),
+    typeof schema === 'function' ? schema() : schema,
+  ]);
+  const parsed = reader.safeParse(await response.json());
   if (parsed.success) return parsed.data;
   const issue = parsed.error.issues[0];
   throw new ApiProblem({

@@ -1,6 +1,7 @@
 'use client';
 
-import { type ActivityPage, type ActivityQuery, activityPageSchema } from '@/lib/schemas/activity';
+import type { ActivityPage, ActivityQuery } from '@/lib/schemas/activity';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -14,6 +15,6 @@ export function fetchEarlier(
 ): Promise<ActivityPage> {
   return request(
     withQuery(apiPath(collaboration, 'activity'), { ...filter, cursor }),
-    activityPageSchema,
+    answer('activityPageSchema'),
   );
 }

@@ -1,19 +1,17 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type AnalysisRecipe, type AnalysisView, analysisSchema } from '@/lib/schemas/analyses';
+import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request, requestNothing } from './request';
-
-export const analysisListSchema = z.object({ analyses: z.array(analysisSchema) });
 
 const POLL_MS = 1000;
 
 export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
   return useSWR(
     apiPath(collaboration, 'analyses'),
-    async (path) => (await request(path, analysisListSchema)).analyses,
+    async (path) => (await request(path, answer('analysisListSchema'))).analyses,
     {
       fallbackData: fallback,
       // Before the first answer of its own SWR knows nothing of the fallback.
@@ -25,17 +23,24 @@ export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
 
 /** One analysis with its runs; asked for every second while one of them is on its way. */
 export function useAnalysis(collaboration: string, key: string, fallback?: AnalysisView) {
-  return useSWR(apiPath(collaboration, 'analyses', key), (path) => request(path, analysisSchema), {
-    fallbackData: fallback,
-    refreshInterval: (analysis = fallback) => (analysis?.state === 'running' ? POLL_MS : 0),
-  });
+  return useSWR(
+    apiPath(collaboration, 'analyses', key),
+    (path) => request(path, answer('analysisSchema')),
+    {
+      fallbackData: fallback,
+      refreshInterval: (analysis = fallback) => (analysis?.state === 'running' ? POLL_MS : 0),
+    },
+  );
 }
 
 export function createAnalysis(
   collaboration: string,
   body: { name: string; recipe: AnalysisRecipe },
 ): Promise<AnalysisView> {
-  return request(apiPath(collaboration, 'analyses'), analysisSchema, { method: 'POST', body });
+  return request(apiPath(collaboration, 'analyses'), answer('analysisSchema'), {
+    method: 'POST',
+    body,
+  });
 }
 
 export function updateAnalysis(
@@ -43,7 +48,7 @@ export function updateAnalysis(
   key: string,
   body: { name?: string; recipe?: AnalysisRecipe },
 ): Promise<AnalysisView> {
-  return request(apiPath(collaboration, 'analyses', key), analysisSchema, {
+  return request(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
     method: 'PATCH',
     body,
   });
@@ -54,7 +59,7 @@ export function copyAnalysis(
   key: string,
   body: { name?: string; detections?: AnalysisRecipe['detections'] } = {},
 ): Promise<AnalysisView> {
-  return request(apiPath(collaboration, 'analyses', key, 'copy'), analysisSchema, {
+  return request(apiPath(collaboration, 'analyses', key, 'copy'), answer('analysisSchema'), {
     method: 'POST',
     body,
   });

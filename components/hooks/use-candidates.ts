@@ -2,15 +2,14 @@
 
 import useSWR from 'swr';
 import type { z } from 'zod';
-import {
-  type addObservationSchema,
-  type CandidateDetail,
-  type CandidateList,
-  type CompanionStatus,
-  candidateDetailSchema,
-  candidateListSchema,
-  type giveVerdictSchema,
+import type {
+  addObservationSchema,
+  CandidateDetail,
+  CandidateList,
+  CompanionStatus,
+  giveVerdictSchema,
 } from '@/lib/schemas/candidates';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request, requestNothing } from './request';
 
@@ -26,7 +25,7 @@ export function useCandidates(
   const query = { ...filter, limit: CANDIDATES_SHOWN };
   return useSWR(
     withQuery(apiPath(collaboration, 'candidates'), query),
-    (path) => request(path, candidateListSchema),
+    (path) => request(path, answer('candidateListSchema')),
     { fallbackData: fallback, keepPreviousData: true },
   );
 }
@@ -34,7 +33,7 @@ export function useCandidates(
 export function useCandidate(collaboration: string, fallback: CandidateDetail) {
   return useSWR(
     apiPath(collaboration, 'candidates', fallback.id),
-    (path) => request(path, candidateDetailSchema),
+    (path) => request(path, answer('candidateDetailSchema')),
     { fallbackData: fallback },
   );
 }
@@ -45,7 +44,7 @@ export function addObservation(
   body: z.input<typeof addObservationSchema>,
 ): Promise<CandidateDetail> {
   const path = apiPath(collaboration, 'candidates', id, 'observations');
-  return request(path, candidateDetailSchema, { method: 'POST', body });
+  return request(path, answer('candidateDetailSchema'), { method: 'POST', body });
 }
 
 export function removeObservation(
@@ -64,5 +63,5 @@ export function giveVerdict(
   body: z.input<typeof giveVerdictSchema>,
 ): Promise<CandidateDetail> {
   const path = apiPath(collaboration, 'candidates', id, 'verdicts');
-  return request(path, candidateDetailSchema, { method: 'POST', body });
+  return request(path, answer('candidateDetailSchema'), { method: 'POST', body });
 }

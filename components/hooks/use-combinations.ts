@@ -1,15 +1,13 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import {
-  type CombinationDefinition,
-  type CombinationPreview,
-  type CombinationView,
-  type CreateCombination,
-  combinationPreviewSchema,
-  combinationSchema,
+import type {
+  CombinationDefinition,
+  CombinationPreview,
+  CombinationView,
+  CreateCombination,
 } from '@/lib/schemas/combinations';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
@@ -17,8 +15,7 @@ import { request } from './request';
 export function useCombinations(collaboration: string, fallback?: CombinationView[]) {
   return useSWR(
     apiPath(collaboration, 'combinations'),
-    async (path) =>
-      (await request(path, z.object({ combinations: z.array(combinationSchema) }))).combinations,
+    async (path) => (await request(path, answer('combinationsAnswerSchema'))).combinations,
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
@@ -31,7 +28,8 @@ export function useCombinationPreview(
   const path = apiPath(collaboration, 'combinations', 'preview');
   return useSWR<CombinationPreview>(
     definition ? [path, JSON.stringify(definition)] : null,
-    () => request(path, combinationPreviewSchema, { method: 'POST', body: { definition } }),
+    () =>
+      request(path, answer('combinationPreviewSchema'), { method: 'POST', body: { definition } }),
     { keepPreviousData: true, revalidateOnFocus: false },
   );
 }
@@ -40,7 +38,7 @@ export function createCombination(
   collaboration: string,
   body: CreateCombination,
 ): Promise<CombinationView> {
-  return request(apiPath(collaboration, 'combinations'), combinationSchema, {
+  return request(apiPath(collaboration, 'combinations'), answer('combinationSchema'), {
     method: 'POST',
     body,
   });

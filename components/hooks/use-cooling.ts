@@ -1,11 +1,8 @@
 'use client';
 
 import useSWR from 'swr';
-import {
-  type CoolingRelationView,
-  coolingRelationSchema,
-  type StartCondition,
-} from '@/lib/schemas/cooling';
+import type { CoolingRelationView, StartCondition } from '@/lib/schemas/cooling';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
@@ -13,7 +10,7 @@ import { request } from './request';
 export function useCoolingRelation(collaboration: string, id: string | undefined) {
   return useSWR<CoolingRelationView>(
     id === undefined ? null : apiPath(collaboration, 'cooling-tables', id),
-    (path: string) => request(path, coolingRelationSchema),
+    (path: string) => request(path, answer('coolingRelationSchema')),
     { revalidateOnFocus: false, keepPreviousData: false },
   );
 }
@@ -23,7 +20,7 @@ export function nameStart(
   id: string,
   startCondition: StartCondition,
 ): Promise<CoolingRelationView> {
-  return request(apiPath(collaboration, 'cooling-tables', id), coolingRelationSchema, {
+  return request(apiPath(collaboration, 'cooling-tables', id), answer('coolingRelationSchema'), {
     method: 'PATCH',
     body: { startCondition },
   });

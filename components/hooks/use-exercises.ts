@@ -1,24 +1,20 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import {
-  type CreateExercise,
-  type ExerciseDetail,
-  type ExerciseView,
-  exerciseDetailSchema,
-  exerciseSchema,
-  submissionSchema,
-  type UpdateExercise,
+import type {
+  CreateExercise,
+  ExerciseDetail,
+  ExerciseView,
+  UpdateExercise,
 } from '@/lib/schemas/exercises';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
 export function useExercises(collaboration: string, fallback?: ExerciseView[]) {
   return useSWR(
     apiPath(collaboration, 'exercises'),
-    async (path) =>
-      (await request(path, z.object({ exercises: z.array(exerciseSchema) }))).exercises,
+    async (path) => (await request(path, answer('exercisesAnswerSchema'))).exercises,
     { fallbackData: fallback },
   );
 }
@@ -26,17 +22,20 @@ export function useExercises(collaboration: string, fallback?: ExerciseView[]) {
 export function useExercise(collaboration: string, fallback: ExerciseDetail) {
   return useSWR(
     apiPath(collaboration, 'exercises', fallback.key),
-    (path) => request(path, exerciseDetailSchema),
+    (path) => request(path, answer('exerciseDetailSchema')),
     { fallbackData: fallback },
   );
 }
 
 export function createExercise(collaboration: string, body: CreateExercise): Promise<ExerciseView> {
-  return request(apiPath(collaboration, 'exercises'), exerciseSchema, { method: 'POST', body });
+  return request(apiPath(collaboration, 'exercises'), answer('exerciseSchema'), {
+    method: 'POST',
+    body,
+  });
 }
 
 export function updateExercise(collaboration: string, key: string, body: UpdateExercise) {
-  return request(apiPath(collaboration, 'exercises', key), exerciseSchema, {
+  return request(apiPath(collaboration, 'exercises', key), answer('exerciseSchema'), {
     method: 'PATCH',
     body,
   });
@@ -45,16 +44,20 @@ export function updateExercise(collaboration: string, key: string, body: UpdateE
 export function beginExercise(collaboration: string, key: string): Promise<{ analysis: string }> {
   return request(
     apiPath(collaboration, 'exercises', key, 'start'),
-    z.object({ analysis: z.string() }),
+    answer('analysisAnswerSchema'),
     { method: 'POST', body: {} },
   );
 }
 
 export function handIn(collaboration: string, key: string, runId: string, remark: string) {
-  return request(apiPath(collaboration, 'exercises', key, 'submissions'), submissionSchema, {
-    method: 'POST',
-    body: { runId, remark },
-  });
+  return request(
+    apiPath(collaboration, 'exercises', key, 'submissions'),
+    answer('submissionSchema'),
+    {
+      method: 'POST',
+      body: { runId, remark },
+    },
+  );
 }
 
 export function commentOn(
@@ -64,7 +67,7 @@ export function commentOn(
   comment: string,
 ) {
   const path = apiPath(collaboration, 'exercises', key, 'submissions', submissionId);
-  return request(path, submissionSchema, { method: 'PATCH', body: { comment } });
+  return request(path, answer('submissionSchema'), { method: 'PATCH', body: { comment } });
 }
 
 /** Address of everybody's submissions as a table; the browser itself follows it. */

@@ -1,7 +1,7 @@
 'use client';
 
 import useSWR from 'swr';
-import { exportListSchema } from '@/lib/schemas/exports';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -17,7 +17,7 @@ const addressOf = (collaboration: string, source: ExportSource, ...rest: string[
 export function useExports(collaboration: string, source: ExportSource, isAsked: boolean) {
   return useSWR(
     isAsked ? addressOf(collaboration, source) : null,
-    (path) => request(path, exportListSchema),
+    (path) => request(path, answer('exportListSchema')),
     { revalidateOnFocus: false },
   );
 }

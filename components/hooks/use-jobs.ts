@@ -1,13 +1,11 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type JobView, jobSchema } from '@/lib/schemas/jobs';
+import type { JobView } from '@/lib/schemas/jobs';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { ApiProblem } from './api-problem';
 import { request } from './request';
-
-const jobsSchema = z.object({ jobs: z.array(jobSchema) });
 
 const isOpen = (job: JobView) => job.status === 'waiting' || job.status === 'running';
 
@@ -22,7 +20,7 @@ const FAILED_MS = 5000;
 export function useJobs(collaboration: string) {
   const { data, error, mutate } = useSWR(
     apiPath(collaboration, 'jobs'),
-    async (path) => (await request(path, jobsSchema)).jobs,
+    async (path) => (await request(path, answer('jobsSchema'))).jobs,
     {
       refreshInterval: (jobs) => (jobs?.some(isOpen) ? BUSY_MS : QUIET_MS),
       onErrorRetry: (_, _key, _config, revalidate, { retryCount }) => {
@@ -40,7 +38,7 @@ export function useJobs(collaboration: string) {
 export function useJob(collaboration: string, id: string | null, fallback?: JobView) {
   return useSWR(
     id === null ? null : apiPath(collaboration, 'jobs', id),
-    (path: string) => request(path, jobSchema),
+    (path: string) => request(path, answer('jobSchema')),
     { fallbackData: fallback, refreshInterval: (job) => (job && !isOpen(job) ? 0 : 1000) },
   );
 }

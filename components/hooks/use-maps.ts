@@ -1,7 +1,8 @@
 'use client';
 
 import useSWR from 'swr';
-import { type MapStore, mapStoreSchema, surveyMapsSchema } from '@/lib/schemas/map-states';
+import type { MapStore } from '@/lib/schemas/map-states';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
@@ -11,7 +12,7 @@ const POLL_MS = 2000;
 export function useSurveyMaps(collaboration: string, slug: string, stamp = '') {
   return useSWR(
     [apiPath(collaboration, 'surveys', slug, 'maps'), stamp],
-    ([path]) => request(path, surveyMapsSchema),
+    ([path]) => request(path, answer('surveyMapsSchema')),
     {
       keepPreviousData: true,
       revalidateOnFocus: false,
@@ -23,7 +24,7 @@ export function useSurveyMaps(collaboration: string, slug: string, stamp = '') {
 
 /** How the maps of every survey stand. */
 export function useMapStore(collaboration: string, fallback: MapStore) {
-  return useSWR(apiPath(collaboration, 'maps'), (path) => request(path, mapStoreSchema), {
+  return useSWR(apiPath(collaboration, 'maps'), (path) => request(path, answer('mapStoreSchema')), {
     fallbackData: fallback,
     revalidateOnFocus: false,
   });

@@ -1,16 +1,14 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type SessionView, sessionSchema } from '@/lib/schemas/account';
-import { meSchema } from '@/lib/schemas/people';
+import type { SessionView } from '@/lib/schemas/account';
+import { answer } from './answer';
 import { request, requestNothing } from './request';
 
 const SESSIONS = '/api/v1/me/sessions';
-const sessionsSchema = z.object({ sessions: z.array(sessionSchema) });
 
 export function changeName(name: string) {
-  return request('/api/v1/me', meSchema, { method: 'PATCH', body: { name } });
+  return request('/api/v1/me', answer('meSchema'), { method: 'PATCH', body: { name } });
 }
 
 /** Other sessions end; this one stays. */
@@ -22,9 +20,13 @@ export function changePassword(currentPassword: string, newPassword: string) {
 }
 
 export function useSessions(fallback: SessionView[]) {
-  return useSWR(SESSIONS, async (path) => (await request(path, sessionsSchema)).sessions, {
-    fallbackData: fallback,
-  });
+  return useSWR(
+    SESSIONS,
+    async (path) => (await request(path, answer('sessionsSchema'))).sessions,
+    {
+      fallbackData: fallback,
+    },
+  );
 }
 
 export const endOneSession = (id: string) =>

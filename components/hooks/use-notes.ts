@@ -1,18 +1,15 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type NoteItem, type NoteList, noteListSchema } from '@/lib/schemas/notes';
-import { memberSchema } from '@/lib/schemas/people';
+import type { NoteItem, NoteList } from '@/lib/schemas/notes';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request, requestNothing } from './request';
-
-const membersSchema = z.object({ members: z.array(memberSchema) });
 
 export function useNotes(collaboration: string, on: NoteItem, fallback: NoteList) {
   return useSWR(
     withQuery(apiPath(collaboration, 'notes'), { ...on }),
-    (path) => request(path, noteListSchema),
+    (path) => request(path, answer('noteListSchema')),
     // What is new stays marked while the page is open: asked again only after a change.
     { fallbackData: fallback, revalidateOnMount: false, revalidateOnFocus: false },
   );
@@ -23,7 +20,7 @@ export function useNameable(collaboration: string, isWanted: boolean) {
   const { data } = useSWR(
     isWanted ? apiPath(collaboration, 'members') : null,
     async (path: string) =>
-      (await request(path, membersSchema)).members.map(({ person }) => person),
+      (await request(path, answer('membersSchema'))).members.map(({ person }) => person),
     { revalidateOnFocus: false },
   );
   return data ?? [];
@@ -35,7 +32,7 @@ export interface NoteText {
 }
 
 export function writeNote(collaboration: string, on: NoteItem, text: NoteText, replyTo?: string) {
-  return request(apiPath(collaboration, 'notes'), noteListSchema, {
+  return request(apiPath(collaboration, 'notes'), answer('noteListSchema'), {
     method: 'POST',
     body: { on, ...text, replyTo },
   });
@@ -46,14 +43,16 @@ export function changeNote(
   id: string,
   change: NoteText | { isResolved: boolean },
 ) {
-  return request(apiPath(collaboration, 'notes', id), noteListSchema, {
+  return request(apiPath(collaboration, 'notes', id), answer('noteListSchema'), {
     method: 'PATCH',
     body: change,
   });
 }
 
 export function removeNote(collaboration: string, id: string) {
-  return request(apiPath(collaboration, 'notes', id), noteListSchema, { method: 'DELETE' });
+  return request(apiPath(collaboration, 'notes', id), answer('noteListSchema'), {
+    method: 'DELETE',
+  });
 }
 
 export function seeNotes(collaboration: string, on: NoteItem) {

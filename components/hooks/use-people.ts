@@ -1,28 +1,16 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
 import type { Role } from '@/lib/schemas/common';
-import {
-  type InvitationView,
-  invitationSchema,
-  type MemberView,
-  memberSchema,
-  newTokenSchema,
-  type TokenView,
-  tokenSchema,
-} from '@/lib/schemas/people';
+import type { InvitationView, MemberView, TokenView } from '@/lib/schemas/people';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request, requestNothing } from './request';
-
-const membersSchema = z.object({ members: z.array(memberSchema) });
-const invitationsSchema = z.object({ invitations: z.array(invitationSchema) });
-const tokensSchema = z.object({ tokens: z.array(tokenSchema) });
 
 export function useMembers(collaboration: string, fallback: MemberView[]) {
   return useSWR(
     apiPath(collaboration, 'members'),
-    async (path) => (await request(path, membersSchema)).members,
+    async (path) => (await request(path, answer('membersSchema'))).members,
     { fallbackData: fallback },
   );
 }
@@ -30,7 +18,7 @@ export function useMembers(collaboration: string, fallback: MemberView[]) {
 export function useInvitations(collaboration: string, fallback: InvitationView[]) {
   return useSWR(
     apiPath(collaboration, 'invitations'),
-    async (path) => (await request(path, invitationsSchema)).invitations,
+    async (path) => (await request(path, answer('invitationsSchema'))).invitations,
     { fallbackData: fallback },
   );
 }
@@ -38,13 +26,13 @@ export function useInvitations(collaboration: string, fallback: InvitationView[]
 export function useTokens(collaboration: string, fallback: TokenView[]) {
   return useSWR(
     apiPath(collaboration, 'tokens'),
-    async (path) => (await request(path, tokensSchema)).tokens,
+    async (path) => (await request(path, answer('tokensSchema'))).tokens,
     { fallbackData: fallback },
   );
 }
 
 export function changeRoles(collaboration: string, memberId: string, roles: Role[]) {
-  return request(apiPath(collaboration, 'members', memberId), z.unknown(), {
+  return request(apiPath(collaboration, 'members', memberId), answer('anyAnswerSchema'), {
     method: 'PATCH',
     body: { roles },
   });
@@ -55,7 +43,7 @@ export function removeMember(collaboration: string, memberId: string) {
 }
 
 export function invite(collaboration: string, email: string, roles: Role[]) {
-  return request(apiPath(collaboration, 'invitations'), z.unknown(), {
+  return request(apiPath(collaboration, 'invitations'), answer('anyAnswerSchema'), {
     method: 'POST',
     body: { email, roles },
   });
@@ -63,7 +51,7 @@ export function invite(collaboration: string, email: string, roles: Role[]) {
 
 /** A new code by mail; the old one opens nothing any more. */
 export function resendInvitation(collaboration: string, id: string) {
-  return request(apiPath(collaboration, 'invitations', id, 'resend'), z.unknown(), {
+  return request(apiPath(collaboration, 'invitations', id, 'resend'), answer('anyAnswerSchema'), {
     method: 'POST',
   });
 }
@@ -76,7 +64,10 @@ export function createToken(
   collaboration: string,
   body: { name: string; scopes: string[]; days: number },
 ) {
-  return request(apiPath(collaboration, 'tokens'), newTokenSchema, { method: 'POST', body });
+  return request(apiPath(collaboration, 'tokens'), answer('newTokenSchema'), {
+    method: 'POST',
+    body,
+  });
 }
 
 export function revokeToken(collaboration: string, id: string) {

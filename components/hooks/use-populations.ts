@@ -1,14 +1,13 @@
 'use client';
 
 import useSWR from 'swr';
-import { populationListSchema } from '@/lib/schemas/population-versions';
-import {
-  type CreatePopulation,
-  type ListedPopulation,
-  type PopulationDefinition,
-  type PopulationView,
-  populationSchema,
+import type {
+  CreatePopulation,
+  ListedPopulation,
+  PopulationDefinition,
+  PopulationView,
 } from '@/lib/schemas/populations';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -16,7 +15,7 @@ import { request } from './request';
 export function usePopulations(collaboration: string, fallback?: ListedPopulation[]) {
   return useSWR(
     apiPath(collaboration, 'populations'),
-    async (path) => (await request(path, populationListSchema)).populations,
+    async (path) => (await request(path, answer('populationListSchema'))).populations,
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
@@ -25,7 +24,7 @@ export function createPopulation(
   collaboration: string,
   population: CreatePopulation,
 ): Promise<PopulationView> {
-  return request(apiPath(collaboration, 'populations'), populationSchema, {
+  return request(apiPath(collaboration, 'populations'), answer('populationSchema'), {
     method: 'POST',
     body: population,
   });
@@ -42,10 +41,14 @@ export function savePopulationVersion(
   key: string,
   version: NewVersion,
 ): Promise<PopulationView> {
-  return request(apiPath(collaboration, 'populations', key, 'versions'), populationSchema, {
-    method: 'POST',
-    body: { ...version, convention: 'log' },
-  });
+  return request(
+    apiPath(collaboration, 'populations', key, 'versions'),
+    answer('populationSchema'),
+    {
+      method: 'POST',
+      body: { ...version, convention: 'log' },
+    },
+  );
 }
 
 /** Whether all may rest on a version; its definition stays as it is. */
@@ -56,5 +59,5 @@ export function sharePopulation(
   isShared: boolean,
 ): Promise<PopulationView> {
   const path = withQuery(apiPath(collaboration, 'populations', key), { version });
-  return request(path, populationSchema, { method: 'PATCH', body: { isShared } });
+  return request(path, answer('populationSchema'), { method: 'PATCH', body: { isShared } });
 }

@@ -1,18 +1,9 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type BundleImportView, bundleImportSchema } from '@/lib/schemas/bundles';
-import {
-  type FreezeStanding,
-  freezeStandingSchema,
-  type GuestLinkView,
-  guestLinkSchema,
-  guestNoteSchema,
-  newGuestLinkSchema,
-  type ReleaseView,
-  releaseSchema,
-} from '@/lib/schemas/releases';
+import type { BundleImportView } from '@/lib/schemas/bundles';
+import type { FreezeStanding, GuestLinkView, ReleaseView } from '@/lib/schemas/releases';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { readProblem } from './api-problem';
 import { request, requestNothing } from './request';
@@ -23,7 +14,7 @@ const CHECK_MS = 2000;
 export function useRelease(collaboration: string, fallback: ReleaseView) {
   return useSWR(
     apiPath(collaboration, 'releases', fallback.id),
-    (path) => request(path, releaseSchema),
+    (path) => request(path, answer('releaseSchema')),
     {
       fallbackData: fallback,
       refreshInterval: (view) => (view?.state === 'checking' ? CHECK_MS : 0),
@@ -35,8 +26,7 @@ export function useRelease(collaboration: string, fallback: ReleaseView) {
 export function useImports(collaboration: string, fallback: BundleImportView[]) {
   return useSWR(
     apiPath(collaboration, 'bundles'),
-    async (path) =>
-      (await request(path, z.object({ imports: z.array(bundleImportSchema) }))).imports,
+    async (path) => (await request(path, answer('importsAnswerSchema'))).imports,
     {
       fallbackData: fallback,
       refreshInterval: (imports) =>
@@ -48,7 +38,7 @@ export function useImports(collaboration: string, fallback: BundleImportView[]) 
 export function useGuestLinks(collaboration: string, fallback: GuestLinkView[]) {
   return useSWR(
     apiPath(collaboration, 'guest-links'),
-    async (path) => (await request(path, z.object({ links: z.array(guestLinkSchema) }))).links,
+    async (path) => (await request(path, answer('linksAnswerSchema'))).links,
     { fallbackData: fallback },
   );
 }
@@ -56,19 +46,24 @@ export function useGuestLinks(collaboration: string, fallback: GuestLinkView[]) 
 export type ReleaseStep = 'sign-off' | 'agree' | 'check' | 'publish';
 
 export const takeStep = (collaboration: string, id: string, step: ReleaseStep) =>
-  request(apiPath(collaboration, 'releases', id, step), releaseSchema, { method: 'POST' });
+  request(apiPath(collaboration, 'releases', id, step), answer('releaseSchema'), {
+    method: 'POST',
+  });
 
 export const withdrawRelease = (collaboration: string, id: string, reason: string) =>
-  request(apiPath(collaboration, 'releases', id, 'withdraw'), releaseSchema, {
+  request(apiPath(collaboration, 'releases', id, 'withdraw'), answer('releaseSchema'), {
     method: 'POST',
     body: { reason },
   });
 
 export const createRelease = (collaboration: string, body: unknown): Promise<ReleaseView> =>
-  request(apiPath(collaboration, 'releases'), releaseSchema, { method: 'POST', body });
+  request(apiPath(collaboration, 'releases'), answer('releaseSchema'), { method: 'POST', body });
 
 export const updateRelease = (collaboration: string, id: string, body: unknown) =>
-  request(apiPath(collaboration, 'releases', id), releaseSchema, { method: 'PATCH', body });
+  request(apiPath(collaboration, 'releases', id), answer('releaseSchema'), {
+    method: 'PATCH',
+    body,
+  });
 
 export const removeRelease = (collaboration: string, id: string) =>
   requestNothing(apiPath(collaboration, 'releases', id), { method: 'DELETE' });
@@ -78,13 +73,16 @@ export const freezeRun = (
   runId: string,
   reason: string,
 ): Promise<FreezeStanding> =>
-  request(apiPath(collaboration, 'runs', runId, 'freeze'), freezeStandingSchema, {
+  request(apiPath(collaboration, 'runs', runId, 'freeze'), answer('freezeStandingSchema'), {
     method: 'POST',
     body: reason === '' ? {} : { reason },
   });
 
 export const createGuestLink = (collaboration: string, body: unknown) =>
-  request(apiPath(collaboration, 'guest-links'), newGuestLinkSchema, { method: 'POST', body });
+  request(apiPath(collaboration, 'guest-links'), answer('newGuestLinkSchema'), {
+    method: 'POST',
+    body,
+  });
 
 export const revokeGuestLink = (collaboration: string, id: string) =>
   requestNothing(apiPath(collaboration, 'guest-links', id), { method: 'DELETE' });
@@ -93,7 +91,7 @@ export const bundleAddress = (collaboration: string, runId: string) =>
   apiPath(collaboration, 'runs', runId, 'bundle');
 
 export const writeGuestNote = (token: string, body: { name: string; body: string }) =>
-  request(`/api/v1/guest/${encodeURIComponent(token)}/notes`, guestNoteSchema, {
+  request(`/api/v1/guest/${encodeURIComponent(token)}/notes`, answer('guestNoteSchema'), {
     method: 'POST',
     body,
   });
@@ -106,5 +104,5 @@ export async function sendBundle(collaboration: string, file: File): Promise<Bun
     body: file,
   });
   if (!response.ok) throw await readProblem(response);
-  return bundleImportSchema.parse(await response.json());
+  return (await answer('bundleImportSchema')()).parse(await response.json());
 }

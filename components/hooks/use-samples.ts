@@ -1,15 +1,13 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import {
-  type CreateSample,
-  type SampleDefinition,
-  type SamplePreview,
-  type SampleView,
-  samplePreviewSchema,
-  sampleSchema,
+import type {
+  CreateSample,
+  SampleDefinition,
+  SamplePreview,
+  SampleView,
 } from '@/lib/schemas/samples';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
@@ -17,7 +15,7 @@ import { request } from './request';
 export function useSamples(collaboration: string, fallback?: SampleView[]) {
   return useSWR(
     apiPath(collaboration, 'samples'),
-    async (path) => (await request(path, z.object({ samples: z.array(sampleSchema) }))).samples,
+    async (path) => (await request(path, answer('samplesAnswerSchema'))).samples,
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
@@ -36,11 +34,18 @@ export function useSamplePreview(
   const path = apiPath(collaboration, 'samples', 'preview');
   return useSWR<SamplePreview>(
     definition && surveyIds?.length !== 0 ? [path, JSON.stringify([definition, surveyIds])] : null,
-    () => request(path, samplePreviewSchema, { method: 'POST', body: { definition, surveyIds } }),
+    () =>
+      request(path, answer('samplePreviewSchema'), {
+        method: 'POST',
+        body: { definition, surveyIds },
+      }),
     { keepPreviousData: true, revalidateOnFocus: false },
   );
 }
 
 export function createSample(collaboration: string, body: CreateSample): Promise<SampleView> {
-  return request(apiPath(collaboration, 'samples'), sampleSchema, { method: 'POST', body });
+  return request(apiPath(collaboration, 'samples'), answer('sampleSchema'), {
+    method: 'POST',
+    body,
+  });
 }

@@ -2,7 +2,7 @@
 
 import { useEffect, useState } from 'react';
 import useSWR from 'swr';
-import { searchAnswerSchema } from '@/lib/schemas/search';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -16,12 +16,12 @@ export function useSearch(collaboration: string, words: string) {
     const timer = setTimeout(() => setSettled(words.trim()), STILL_MS);
     return () => clearTimeout(timer);
   }, [words]);
-  const answer = useSWR(
+  const found = useSWR(
     settled === ''
       ? null
       : withQuery(apiPath(collaboration, 'search'), { q: settled.slice(0, 100) }),
-    async (path) => (await request(path, searchAnswerSchema)).hits,
+    async (path) => (await request(path, answer('searchAnswerSchema'))).hits,
     { keepPreviousData: true, revalidateOnFocus: false, shouldRetryOnError: false },
   );
-  return { ...answer, isSettled: settled === words.trim() && !answer.isLoading };
+  return { ...found, isSettled: settled === words.trim() && !found.isLoading };
 }

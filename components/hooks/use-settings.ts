@@ -1,19 +1,14 @@
 'use client';
 
 import useSWR from 'swr';
-import {
-  type ChangeMailPreference,
-  type FailedMessage,
-  failedMessagesSchema,
-  mailPreferencesSchema,
-  stoppedMailSchema,
-} from '@/lib/schemas/mail';
-import { type ChangeSettings, settingsSchema } from '@/lib/schemas/settings';
+import type { ChangeMailPreference, FailedMessage } from '@/lib/schemas/mail';
+import type { ChangeSettings } from '@/lib/schemas/settings';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request, requestNothing } from './request';
 
 export function changeSettings(collaboration: string, change: ChangeSettings) {
-  return request(apiPath(collaboration, 'settings'), settingsSchema, {
+  return request(apiPath(collaboration, 'settings'), answer('settingsSchema'), {
     method: 'PATCH',
     body: change,
   });
@@ -22,7 +17,7 @@ export function changeSettings(collaboration: string, change: ChangeSettings) {
 export function useFailedMessages(collaboration: string, fallback: FailedMessage[]) {
   return useSWR(
     apiPath(collaboration, 'mail'),
-    async (path) => (await request(path, failedMessagesSchema)).messages,
+    async (path) => (await request(path, answer('failedMessagesSchema'))).messages,
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
@@ -32,9 +27,15 @@ export function retryMessage(collaboration: string, id: string) {
 }
 
 export function changeMailPreference(change: ChangeMailPreference) {
-  return request('/api/v1/me/mail', mailPreferencesSchema, { method: 'PATCH', body: change });
+  return request('/api/v1/me/mail', answer('mailPreferencesSchema'), {
+    method: 'PATCH',
+    body: change,
+  });
 }
 
 export function stopMail(token: string) {
-  return request('/api/v1/mail/stop', stoppedMailSchema, { method: 'POST', body: { token } });
+  return request('/api/v1/mail/stop', answer('stoppedMailSchema'), {
+    method: 'POST',
+    body: { token },
+  });
 }

@@ -2,19 +2,13 @@
 
 import useSWR from 'swr';
 import type { z } from 'zod';
-import {
-  type offerSurveySchema,
-  type Shares,
-  type ShareView,
-  shareSchema,
-  sharesSchema,
-  type WithdrawShare,
-} from '@/lib/schemas/sharing';
+import type { offerSurveySchema, Shares, ShareView, WithdrawShare } from '@/lib/schemas/sharing';
+import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
 export function useShares(collaboration: string, fallback: Shares) {
-  return useSWR(apiPath(collaboration, 'shares'), (path) => request(path, sharesSchema), {
+  return useSWR(apiPath(collaboration, 'shares'), (path) => request(path, answer('sharesSchema')), {
     fallbackData: fallback,
   });
 }
@@ -25,11 +19,14 @@ export function offerSurvey(
   body: z.input<typeof offerSurveySchema>,
 ): Promise<ShareView> {
   const path = apiPath(collaboration, 'surveys', survey, 'shares');
-  return request(path, shareSchema, { method: 'POST', body });
+  return request(path, answer('shareSchema'), { method: 'POST', body });
 }
 
 const act = (collaboration: string, id: string, verb: string, body?: unknown) =>
-  request(apiPath(collaboration, 'shares', id, verb), shareSchema, { method: 'POST', body });
+  request(apiPath(collaboration, 'shares', id, verb), answer('shareSchema'), {
+    method: 'POST',
+    body,
+  });
 
 export const acceptShare = (collaboration: string, id: string) => act(collaboration, id, 'accept');
 export const refreshShare = (collaboration: string, id: string) =>

@@ -1,17 +1,8 @@
 'use client';
 
 import useSWR from 'swr';
-import {
-  type Adoption,
-  type Overlaps,
-  overlapsSchema,
-  proposedSchema,
-  type StarList,
-  type StarPage,
-  type StarView,
-  starListSchema,
-  starPageSchema,
-} from '@/lib/schemas/stars';
+import type { Adoption, Overlaps, StarList, StarPage, StarView } from '@/lib/schemas/stars';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -27,7 +18,7 @@ export function useAllStars(collaboration: string, fallback: StarList) {
       for (;;) {
         const page = await request(
           withQuery(path, { limit: PAGE, offset: stars.length }),
-          starListSchema,
+          answer('starListSchema'),
         );
         stars.push(...page.stars);
         if (page.stars.length === 0 || stars.length >= page.total) return { ...page, stars };
@@ -40,7 +31,7 @@ export function useAllStars(collaboration: string, fallback: StarList) {
 export function useStar(collaboration: string, id: string, fallback: StarPage) {
   return useSWR(
     apiPath(collaboration, 'stars', id),
-    (path) => request(path, starPageSchema),
+    (path) => request(path, answer('starPageSchema')),
     // Maps follow an adopted value after some time.
     {
       fallbackData: fallback,
@@ -53,7 +44,7 @@ export function useStar(collaboration: string, id: string, fallback: StarPage) {
 export function useOverlaps(collaboration: string, fallback: Overlaps) {
   return useSWR(
     apiPath(collaboration, 'stars', 'overlaps'),
-    (path) => request(path, overlapsSchema),
+    (path) => request(path, answer('overlapsSchema')),
     { fallbackData: fallback },
   );
 }
@@ -67,17 +58,17 @@ export function decidePair(
   why: string,
 ): Promise<Overlaps> {
   const path = apiPath(collaboration, 'stars', 'overlaps', pair, verdict);
-  return request(path, overlapsSchema, { method: 'POST', body: { why } });
+  return request(path, answer('overlapsSchema'), { method: 'POST', body: { why } });
 }
 
 export async function proposePairs(collaboration: string): Promise<number> {
   const path = apiPath(collaboration, 'stars', 'overlaps');
-  return (await request(path, proposedSchema, { method: 'POST' })).proposed;
+  return (await request(path, answer('proposedSchema'), { method: 'POST' })).proposed;
 }
 
 export function adoptValue(collaboration: string, star: string, body: Adoption): Promise<StarPage> {
   const path = apiPath(collaboration, 'stars', star, 'adopt');
-  return request(path, starPageSchema, { method: 'POST', body });
+  return request(path, answer('starPageSchema'), { method: 'POST', body });
 }
 
 export function splitStar(
@@ -86,5 +77,5 @@ export function splitStar(
   body: { targetId: string; why: string },
 ): Promise<StarPage> {
   const path = apiPath(collaboration, 'stars', star, 'split');
-  return request(path, starPageSchema, { method: 'POST', body });
+  return request(path, answer('starPageSchema'), { method: 'POST', body });
 }

@@ -1,14 +1,12 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
 import type { JobView } from '@/lib/schemas/jobs';
-import { type StudySummary, studySchema, studySummarySchema } from '@/lib/schemas/studies';
+import type { StudySummary } from '@/lib/schemas/studies';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request, requestNothing } from './request';
-
-export const studyListSchema = z.object({ studies: z.array(studySummarySchema) });
 
 const POLL_MS = 1000;
 
@@ -17,7 +15,7 @@ const pollWhileOpen = (studies: StudySummary[] | undefined) =>
   studies?.some(({ job }) => isOpen(job)) ? POLL_MS : 0;
 
 async function fetchStudies(path: string): Promise<StudySummary[]> {
-  return (await request(path, studyListSchema)).studies;
+  return (await request(path, answer('studyListSchema'))).studies;
 }
 
 /** Questions asked of a run, newest first; asked for every second while one is on its way. */
@@ -40,7 +38,7 @@ export function useStudiesOfKind(collaboration: string, kind: StudyKind) {
 export function useStudy(collaboration: string, id: string | undefined) {
   return useSWR(
     id === undefined ? null : apiPath(collaboration, 'studies', id),
-    (path) => request(path, studySchema),
+    (path) => request(path, answer('studySchema')),
     {
       refreshInterval: (study) => (study && isOpen(study.job) ? POLL_MS : 0),
       revalidateOnFocus: false,
@@ -54,7 +52,7 @@ export function askStudy(
   runId: string,
   settings: StudySettings,
 ): Promise<StudySummary> {
-  return request(apiPath(collaboration, 'runs', runId, 'studies'), studySummarySchema, {
+  return request(apiPath(collaboration, 'runs', runId, 'studies'), answer('studySummarySchema'), {
     method: 'POST',
     body: settings,
   });

@@ -1,25 +1,20 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import { type JobView, jobSchema } from '@/lib/schemas/jobs';
-import { type MapView, mapViewSchema } from '@/lib/schemas/sensitivity';
-import {
-  type CompanionView,
-  companionSchema,
-  coolingTableSchema,
-  type createSurveySchema,
-  type MarkTarget,
-  type SurveyList,
-  type SurveyView,
-  surveyListSchema,
-  surveySchema,
-  type TargetList,
-  type TargetView,
-  targetListSchema,
-  targetSchema,
-  type updateSurveySchema,
+import type { z } from 'zod';
+import type { JobView } from '@/lib/schemas/jobs';
+import type { MapView } from '@/lib/schemas/sensitivity';
+import type {
+  CompanionView,
+  createSurveySchema,
+  MarkTarget,
+  SurveyList,
+  SurveyView,
+  TargetList,
+  TargetView,
+  updateSurveySchema,
 } from '@/lib/schemas/surveys';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -28,18 +23,26 @@ const isComputing = (survey: SurveyView | undefined) =>
   survey?.mapJob?.status === 'running' || survey?.mapJob?.status === 'waiting';
 
 export function useSurveys(collaboration: string, fallback: SurveyList) {
-  return useSWR(apiPath(collaboration, 'surveys'), (path) => request(path, surveyListSchema), {
-    fallbackData: fallback,
-    refreshInterval: (list = fallback) => (list.surveys.some(isComputing) ? POLL_MS : 0),
-  });
+  return useSWR(
+    apiPath(collaboration, 'surveys'),
+    (path) => request(path, answer('surveyListSchema')),
+    {
+      fallbackData: fallback,
+      refreshInterval: (list = fallback) => (list.surveys.some(isComputing) ? POLL_MS : 0),
+    },
+  );
 }
 
 /** One survey; asked for more often while its maps are being computed. */
 export function useSurvey(collaboration: string, slug: string, fallback: SurveyView) {
-  return useSWR(apiPath(collaboration, 'surveys', slug), (path) => request(path, surveySchema), {
-    fallbackData: fallback,
-    refreshInterval: (survey = fallback) => (isComputing(survey) ? POLL_MS : 0),
-  });
+  return useSWR(
+    apiPath(collaboration, 'surveys', slug),
+    (path) => request(path, answer('surveySchema')),
+    {
+      fallbackData: fallback,
+      refreshInterval: (survey = fallback) => (isComputing(survey) ? POLL_MS : 0),
+    },
+  );
 }
 
 /**
@@ -61,7 +64,7 @@ export function useTargets(
       for (;;) {
         const page = await request(
           withQuery(path, { limit: 500, offset: targets.length }),
-          targetListSchema,
+          answer('targetListSchema'),
         );
         targets.push(...page.targets);
         if (page.targets.length === 0 || targets.length >= page.total) {
@@ -81,20 +84,23 @@ export function useTargets(
 export function useCompanions(collaboration: string, slug: string, fallback: CompanionView[]) {
   return useSWR(
     apiPath(collaboration, 'surveys', slug, 'companions'),
-    async (path) =>
-      (await request(path, z.object({ companions: z.array(companionSchema) }))).companions,
+    async (path) => (await request(path, answer('companionsAnswerSchema'))).companions,
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
 
 /** Companions and candidates of several surveys together. */
 export function useCompanionsOf(collaboration: string, slugs: string[]) {
-  const schema = z.object({ companions: z.array(companionSchema) });
   return useSWR(
     slugs.length === 0 ? null : ['companions of', collaboration, ...slugs],
     async () => {
       const lists = await Promise.all(
-        slugs.map((slug) => request(apiPath(collaboration, 'surveys', slug, 'companions'), schema)),
+        slugs.map((slug) =>
+          request(
+            apiPath(collaboration, 'surveys', slug, 'companions'),
+            answer('companionsAnswerSchema'),
+          ),
+        ),
       );
       return lists.flatMap(({ companions }) => companions);
     },
@@ -106,7 +112,7 @@ export function useCompanionsOf(collaboration: string, slugs: string[]) {
 export function useMap(collaboration: string, id: string | null) {
   return useSWR<MapView>(
     id === null ? null : apiPath(collaboration, 'maps', id),
-    (path: string) => request(path, mapViewSchema),
+    (path: string) => request(path, answer('mapViewSchema')),
     { revalidateOnFocus: false, revalidateIfStale: false },
   );
 }
@@ -114,8 +120,7 @@ export function useMap(collaboration: string, id: string | null) {
 export function useCoolingTables(collaboration: string) {
   return useSWR(
     apiPath(collaboration, 'cooling-tables'),
-    async (path) =>
-      (await request(path, z.object({ coolingTables: z.array(coolingTableSchema) }))).coolingTables,
+    async (path) => (await request(path, answer('coolingTablesAnswerSchema'))).coolingTables,
   );
 }
 
@@ -123,7 +128,10 @@ export function createSurvey(
   collaboration: string,
   body: z.input<typeof createSurveySchema>,
 ): Promise<SurveyView> {
-  return request(apiPath(collaboration, 'surveys'), surveySchema, { method: 'POST', body });
+  return request(apiPath(collaboration, 'surveys'), answer('surveySchema'), {
+    method: 'POST',
+    body,
+  });
 }
 
 export function updateSurvey(
@@ -131,11 +139,16 @@ export function updateSurvey(
   slug: string,
   body: z.input<typeof updateSurveySchema>,
 ): Promise<SurveyView> {
-  return request(apiPath(collaboration, 'surveys', slug), surveySchema, { method: 'PATCH', body });
+  return request(apiPath(collaboration, 'surveys', slug), answer('surveySchema'), {
+    method: 'PATCH',
+    body,
+  });
 }
 
 export function startMaps(collaboration: string, slug: string): Promise<JobView> {
-  return request(apiPath(collaboration, 'surveys', slug, 'maps'), jobSchema, { method: 'POST' });
+  return request(apiPath(collaboration, 'surveys', slug, 'maps'), answer('jobSchema'), {
+    method: 'POST',
+  });
 }
 
 /** Leaves a target out with a reason, takes it back in, or marks how it was chosen. */
@@ -144,5 +157,8 @@ export function markTarget(
   id: string,
   body: MarkTarget,
 ): Promise<TargetView> {
-  return request(apiPath(collaboration, 'targets', id), targetSchema, { method: 'PATCH', body });
+  return request(apiPath(collaboration, 'targets', id), answer('targetSchema'), {
+    method: 'PATCH',
+    body,
+  });
 }

@@ -1,15 +1,13 @@
 'use client';
 
 import useSWR from 'swr';
-import { z } from 'zod';
-import {
-  dependentsSchema,
-  type UploadDependents,
-  type UploadKindName,
-  type UploadSettings,
-  type UploadView,
-  uploadSchema,
+import type {
+  UploadDependents,
+  UploadKindName,
+  UploadSettings,
+  UploadView,
 } from '@/lib/schemas/uploads';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { ApiProblem, readProblem } from './api-problem';
 import { request, requestNothing } from './request';
@@ -18,7 +16,7 @@ import { request, requestNothing } from './request';
 export function useUploads(collaboration: string, survey: string, fallback?: UploadView[]) {
   return useSWR(
     withQuery(apiPath(collaboration, 'uploads'), { survey, limit: 100 }),
-    async (path) => (await request(path, z.object({ uploads: z.array(uploadSchema) }))).uploads,
+    async (path) => (await request(path, answer('uploadsAnswerSchema'))).uploads,
     { fallbackData: fallback },
   );
 }
@@ -87,7 +85,7 @@ export async function sendUpload(
   };
   const response = await post(path, file, headers, onSent);
   if (!response.ok) throw await readProblem(response);
-  return uploadSchema.parse(await response.json());
+  return (await answer('uploadSchema')()).parse(await response.json());
 }
 
 export function changeUpload(
@@ -95,23 +93,25 @@ export function changeUpload(
   id: string,
   settings: UploadSettings,
 ): Promise<UploadView> {
-  return request(apiPath(collaboration, 'uploads', id), uploadSchema, {
+  return request(apiPath(collaboration, 'uploads', id), answer('uploadSchema'), {
     method: 'PATCH',
     body: settings,
   });
 }
 
 export function storeUpload(collaboration: string, id: string): Promise<UploadView> {
-  return request(apiPath(collaboration, 'uploads', id, 'store'), uploadSchema, { method: 'POST' });
+  return request(apiPath(collaboration, 'uploads', id, 'store'), answer('uploadSchema'), {
+    method: 'POST',
+  });
 }
 
 /** What a stored file carries; asked for anew each time it is shown. */
 export function readDependents(collaboration: string, id: string): Promise<UploadDependents> {
-  return request(apiPath(collaboration, 'uploads', id, 'dependents'), dependentsSchema);
+  return request(apiPath(collaboration, 'uploads', id, 'dependents'), answer('dependentsSchema'));
 }
 
 export function withdrawUpload(collaboration: string, id: string): Promise<UploadView> {
-  return request(apiPath(collaboration, 'uploads', id, 'withdraw'), uploadSchema, {
+  return request(apiPath(collaboration, 'uploads', id, 'withdraw'), answer('uploadSchema'), {
     method: 'POST',
   });
 }

@@ -7,8 +7,9 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
 import type { Role } from '@/lib/schemas/common';
-import { inviteSchema } from '@/lib/schemas/people';
 import { RoleFields } from './role-fields';
+
+const loadSchema = async () => (await import('@/lib/schemas/people')).inviteSchema;
 
 interface InviteFormProps {
   collaboration: string;
@@ -19,9 +20,9 @@ interface InviteFormProps {
 
 /** An address and roles; the message goes out when it is sent. */
 export function InviteForm({ collaboration, offered, onInvited }: InviteFormProps) {
-  const { form, field, submit, refusal, isBusy, isUnsaved } = useSchemaForm(inviteSchema, {
+  const { form, field, submit, refusal, isBusy, isUnsaved } = useSchemaForm(loadSchema, {
     email: '',
-    roles: ['student'],
+    roles: ['student'] as Role[],
   });
   const roles = form.watch('roles');
   return (

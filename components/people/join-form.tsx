@@ -9,7 +9,7 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
-import { type InvitationOffer, signUpSchema } from '@/lib/schemas/people';
+import type { InvitationOffer } from '@/lib/schemas/people';
 
 interface JoinFormProps {
   code: string;
@@ -63,12 +63,12 @@ export function JoinForm({ code, offer, signedInAs }: JoinFormProps) {
   return <NewAccount offer={offer} code={code} />;
 }
 
+const loadSchema = async () =>
+  (await import('@/lib/schemas/people')).signUpSchema.pick({ name: true, password: true });
+
 /** For somebody without an account: the address is the one that was invited. */
 function NewAccount({ code, offer }: { code: string; offer: InvitationOffer }) {
-  const { field, submit, refusal, isBusy } = useSchemaForm(
-    signUpSchema.pick({ name: true, password: true }),
-    { name: '', password: '' },
-  );
+  const { field, submit, refusal, isBusy } = useSchemaForm(loadSchema, { name: '', password: '' });
   return (
     <form
       noValidate

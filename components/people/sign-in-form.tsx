@@ -7,11 +7,12 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
-import { signInSchema } from '@/lib/schemas/people';
+
+const loadSchema = async () => (await import('@/lib/schemas/people')).signInSchema;
 
 /** E-mail and password; on success the browser goes to `next`, an address of this site. */
 export function SignInForm({ next }: { next: string }) {
-  const { field, submit, refusal, setRefusal, isBusy } = useSchemaForm(signInSchema, {
+  const { field, submit, refusal, setRefusal, isBusy } = useSchemaForm(loadSchema, {
     email: '',
     password: '',
   });

@@ -7,11 +7,12 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
-import { signUpSchema } from '@/lib/schemas/people';
+
+const loadSchema = async () => (await import('@/lib/schemas/people')).signUpSchema;
 
 /** Makes an account and signs it in; the collaboration comes on the next page. */
 export function SignUpForm() {
-  const { field, submit, refusal, isBusy } = useSchemaForm(signUpSchema, {
+  const { field, submit, refusal, isBusy } = useSchemaForm(loadSchema, {
     name: '',
     email: '',
     password: '',

@@ -7,7 +7,8 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { NumberField } from '@/components/ui/number-field';
 import { TextField } from '@/components/ui/text-field';
-import { createTokenSchema } from '@/lib/schemas/people';
+
+const loadSchema = async () => (await import('@/lib/schemas/people')).createTokenSchema;
 
 const scopes = [
   { value: 'read', label: 'read', hint: 'surveys, maps, populations, analyses, results' },
@@ -23,7 +24,7 @@ interface TokenFormProps {
 
 /** What a new token is for, what it may, and when it ends. */
 export function TokenForm({ collaboration, onMade }: TokenFormProps) {
-  const { form, field, submit, refusal, isBusy } = useSchemaForm(createTokenSchema, {
+  const { form, field, submit, refusal, isBusy } = useSchemaForm(loadSchema, {
     name: '',
     scopes: ['read'],
     days: 90,

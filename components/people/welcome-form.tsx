@@ -5,7 +5,8 @@ import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
-import { createCollaborationSchema } from '@/lib/schemas/people';
+
+const loadSchema = async () => (await import('@/lib/schemas/people')).createCollaborationSchema;
 
 const slugFrom = (name: string) =>
   name
@@ -17,7 +18,7 @@ const slugFrom = (name: string) =>
 
 /** Starts a collaboration, whose owner the person becomes. */
 export function WelcomeForm() {
-  const { form, field, submit, refusal, isBusy } = useSchemaForm(createCollaborationSchema, {
+  const { form, field, submit, refusal, isBusy } = useSchemaForm(loadSchema, {
     name: '',
     slug: '',
   });

@@ -39,7 +39,8 @@ export function entryOfHit(collaboration: string, hit: SearchHit): Entry {
   };
 }
 
-const startsAWord = (text: string, words: string) =>
+/** Whether some word of the text begins so. */
+export const startsAWord = (text: string, words: string) =>
   ` ${text.toLowerCase()}`.includes(` ${words.toLowerCase()}`);
 
 function pageEntry(collaboration: string, { label, path }: Section): Entry {

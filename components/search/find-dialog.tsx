@@ -9,6 +9,7 @@ import { Icon } from '@/components/ui/icon';
 import { TextAction } from '@/components/ui/text-action';
 import { type BeginAction, type Entry, entriesHere, entryOfHit } from './entries';
 import { keepRecent, readRecent } from './recent';
+import { wordEntries } from './word-entries';
 
 interface FindDialogProps {
   collaboration: string;
@@ -41,7 +42,7 @@ export function FindDialog({ collaboration, actions, isOpen, onClose }: FindDial
       return grouped([...recent, ...here.filter(({ id }) => !listed.has(id))]);
     }
     const found = (hits ?? []).map((hit) => entryOfHit(collaboration, hit));
-    return grouped([...found, ...here]);
+    return grouped([...found, ...here, ...wordEntries(wanted)]);
   }, [collaboration, actions, wanted, hits]);
   const entries = sections.flatMap((section) => section.entries);
   const current = entries[Math.min(chosen, entries.length - 1)];

@@ -8,7 +8,7 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { announce } from '@/components/ui/toast-store';
 import type { SurveyView } from '@/lib/schemas/surveys';
-import { SurveyFields, surveyFactsSchema } from './survey-fields';
+import { loadSurveyFacts, SurveyFields } from './survey-fields';
 
 interface SurveyFactsDialogProps {
   collaboration: string;
@@ -48,7 +48,7 @@ function FactsForm({
   onSaved,
 }: Omit<SurveyFactsDialogProps, 'isOpen'> & { formId: string }) {
   const { name, band, description, observedFrom, observedTo } = survey;
-  const { field, submit, refusal } = useSchemaForm(surveyFactsSchema, {
+  const { field, submit, refusal } = useSchemaForm(loadSurveyFacts, {
     name,
     band,
     description,

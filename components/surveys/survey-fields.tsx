@@ -2,22 +2,20 @@ import type { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { NumberField } from '@/components/ui/number-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import { createSurveySchema } from '@/lib/schemas/surveys';
 
 /** What a survey is called and when it observed; how its maps are made is asked elsewhere. */
-export const surveyFactsSchema = createSurveySchema.pick({
-  name: true,
-  band: true,
-  description: true,
-  observedFrom: true,
-  observedTo: true,
-});
+export const loadSurveyFacts = async () =>
+  (await import('@/lib/schemas/surveys')).createSurveySchema.pick({
+    name: true,
+    band: true,
+    description: true,
+    observedFrom: true,
+    observedTo: true,
+  });
 
+type SurveyFacts = Awaited<ReturnType<typeof loadSurveyFacts>>;
 type SurveyFactsForm = ReturnType<
-  typeof useSchemaForm<
-    (typeof surveyFactsSchema)['_zod']['input'],
-    (typeof surveyFactsSchema)['_zod']['output']
-  >
+  typeof useSchemaForm<SurveyFacts['_zod']['input'], SurveyFacts['_zod']['output']>
 >;
 
 const asYear = {

@@ -9,14 +9,14 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { MapSettingsFields, readMapSettings } from './map-settings-fields';
-import { SurveyFields, surveyFactsSchema } from './survey-fields';
+import { loadSurveyFacts, SurveyFields } from './survey-fields';
 
 /** Name, band and the settings with which curves become maps. */
 export function SurveyForm({ collaboration }: { collaboration: string }) {
   const router = useRouter();
   const { data: tables = [] } = useCoolingTables(collaboration);
   const settings = useRef<HTMLFormElement>(null);
-  const { field, submit, refusal, isBusy, isUnsaved } = useSchemaForm(surveyFactsSchema, {
+  const { field, submit, refusal, isBusy, isUnsaved } = useSchemaForm(loadSurveyFacts, {
     name: '',
     band: '',
     description: '',

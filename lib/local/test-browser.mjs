@@ -3,6 +3,7 @@ import path from 'node:path';
 import { databaseAddress, querySuperuser } from './cluster-server.mjs';
 import { installDebianPackage } from './debian.mjs';
 import { dataFolder, LauncherProblem, root } from './environment.mjs';
+import { MOST_BYTES, measurePages, sizeLine } from './page-sizes.mjs';
 import { findFreePort } from './ports.mjs';
 import { run } from './process-run.mjs';
 import { chooseMail, productEnvironment, runScript, startProduct } from './product.mjs';
@@ -19,10 +20,17 @@ const chromium = '/usr/bin/chromium';
 /** @returns {string | null} the folder of an up-to-date build; a product's own is only read */
 const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
 
-/** @returns {Promise<Count>} */
+/** Builds the web part, and weighs what each page of it loads first. @returns {Promise<Count>} */
 export async function checkBuild() {
   if (freshBuild() === null) await buildWeb(testDistFolder);
-  return { passed: 1, failed: 0, notes: [] };
+  const pages = measurePages(freshBuild() ?? testDistFolder);
+  const large = pages.filter(({ bytes }) => bytes > MOST_BYTES);
+  const head = `Compressed JavaScript of the first load, at most ${MOST_BYTES / 1000} kB a page:`;
+  return {
+    passed: 1 + pages.length - large.length,
+    failed: large.length,
+    notes: [[head, ...pages.map(sizeLine)].join('\n')],
+  };
 }
 
 /**

@@ -1,30 +1,42 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useState } from 'react';
 import {
   type DefaultValues,
+  type FieldError,
   type FieldValues,
   get,
   type Path,
   type RegisterOptions,
+  type Resolver,
   useForm,
 } from 'react-hook-form';
 import type { ZodType } from 'zod';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { faultWords, wantedWords } from './field-words';
 
+/** Loaded with the first field that is left: a form is drawn without it. */
+async function loadResolver<In extends FieldValues, Out>(
+  schema: () => Promise<ZodType<Out, In>>,
+): Promise<Resolver<In, unknown, Out>> {
+  const [{ zodResolver }, wanted] = await Promise.all([
+    import('@hookform/resolvers/zod'),
+    schema(),
+  ]);
+  return zodResolver(wanted);
+}
+
 /**
- * A form over the schema that its route parses by. What the schema refuses is said at the field on
+ * A form over the schema that its route parses by, given by what loads it. What the schema refuses is said at the field on
  * leaving it; what the server refuses lands on its field where the fault names one, and else in
  * `refusal`.
  */
 export function useSchemaForm<In extends FieldValues, Out>(
-  schema: ZodType<Out, In>,
+  schema: () => Promise<ZodType<Out, In>>,
   defaultValues: DefaultValues<In>,
 ) {
   const form = useForm<In, unknown, Out>({
-    resolver: zodResolver(schema),
+    resolver: async (...asked) => (await loadResolver(schema))(...asked),
     defaultValues,
     mode: 'onTouched',
   });
@@ -33,12 +45,12 @@ export function useSchemaForm<In extends FieldValues, Out>(
 
   /** Name, value, error: everything that a field of ours takes. */
   const field = (name: Path<In>, options?: RegisterOptions<In, Path<In>>) => {
-    const message: unknown = get(errors, name)?.message;
-    const isOwn = get(errors, name)?.type === 'server';
-    const words = typeof message === 'string' && !isOwn ? wantedWords(message) : message;
+    const fault = get(errors, name) as FieldError | undefined;
+    const words = fault?.message ?? '';
+    const isFromServer = fault?.type === 'server';
     return {
       ...form.register(name, options),
-      error: typeof words === 'string' ? words : undefined,
+      error: words === '' ? undefined : isFromServer ? words : wantedWords(words),
     };
   };
 

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { entriesHere } from '@/components/search/entries';
+import { wordEntries } from '@/components/search/word-entries';
 import { faultWords, wantedWords } from '@/components/ui/form/field-words';
 import { endedSentence, jobHref, jobTitle } from '@/components/work/job-words';
 import { createTokenSchema, signUpSchema } from '@/lib/schemas/people';
@@ -61,5 +62,10 @@ describe('places without a question to the server', () => {
     expect(titles('vett')).toEqual(['Candidates']);
     expect(titles('nalys')).toEqual([]);
     expect(titles('')).toContain('Overview');
+  });
+
+  it('include the words that the help explains', () => {
+    expect(wordEntries('upper').map(({ href }) => href)).toContain('/help/upper-limit');
+    expect(wordEntries('')).toEqual([]);
   });
 });
