@@ -12,7 +12,7 @@ export const menuLooks: Record<MenuLook, string> = {
 };
 
 export const floatingLook =
-  'z-40 rounded border border-rule2 bg-surface text-ink focus-visible:outline-none';
+  'z-[55] rounded border border-rule2 bg-surface text-ink focus-visible:outline-none';
 
 /** What the button and its list are given, before and after the list was loaded. */
 export interface MenuProps {

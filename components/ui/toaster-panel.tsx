@@ -55,7 +55,7 @@ export function ToasterPanel() {
           </Primitive.Close>
         </Primitive.Root>
       ))}
-      <Primitive.Viewport className="fixed right-4 bottom-4 z-[60] flex w-[min(380px,calc(100vw-32px))] list-none flex-col gap-2 print:hidden" />
+      <Primitive.Viewport className="fixed right-4 bottom-4 z-[60] max-md:bottom-20 flex w-[min(380px,calc(100vw-32px))] list-none flex-col gap-2 print:hidden" />
     </Primitive.Provider>
   );
 }

@@ -39,12 +39,12 @@ export function TopBar({ brandHref, switcher, nav, tools }: TopBarProps) {
             <Wordmark />
           </span>
         </Link>
-        {switcher !== undefined && <div className="min-w-0 flex-1 lg:flex-none">{switcher}</div>}
+        {switcher !== undefined && <div className="min-w-0 flex-1 lg:flex-initial">{switcher}</div>}
         {hasNav && (
           <nav
             id={navId}
             aria-label="Main"
-            className={`${isOpen ? 'flex' : 'hidden'} order-last w-full flex-col border-rule border-t pb-2 lg:order-none lg:flex lg:w-auto lg:flex-row lg:gap-0.5 lg:self-stretch lg:border-0 lg:pb-0`}
+            className={`${isOpen ? 'flex' : 'hidden'} order-last w-full flex-col border-rule border-t pb-2 lg:order-none lg:flex lg:w-auto lg:shrink-0 lg:flex-row lg:gap-0.5 lg:self-stretch lg:border-0 lg:pb-0`}
             onClickCapture={(event) => {
               if ((event.target as Element).closest('a')) setOpen(false);
             }}
