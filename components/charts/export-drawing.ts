@@ -89,7 +89,8 @@ function* rulesWithin(rules: CSSRuleList): Generator<CSSStyleRule> {
 /**
  * A drawing of the page as a file that stands alone: light tokens written out, caption below.
  *
- * @param drawing the SVG of a ChartFigure; marks with `data-screen-only` stay behind
+ * @param drawing the SVG of a ChartFigure; marks with `data-screen-only` stay behind, those with
+ *   `data-file-only` show, such as a name that stands beside the drawing on its page
  * @throws Error where the page's tokens cannot be read
  */
 export function drawingToSvg(
@@ -131,6 +132,9 @@ function withLightStyles(drawing: SVGSVGElement, width: number): string {
   for (const [name, value] of lightTokens()) host.style.setProperty(name, value);
   const copy = drawing.cloneNode(true) as SVGSVGElement;
   for (const element of copy.querySelectorAll('[data-screen-only]')) element.remove();
+  for (const element of copy.querySelectorAll('[data-file-only]')) {
+    element.removeAttribute('visibility');
+  }
   host.append(copy);
   document.body.append(host);
   try {

@@ -33,7 +33,7 @@ export interface OverlaidPosteriorsChartProps {
   height?: number;
 }
 
-const margin = { left: 8, right: 14, top: 8, bottom: 50 };
+const margin = { left: 8, right: 14, top: 24, bottom: 50 };
 /** The first is solid and filled; the others differ by their dashes, and all by their letters. */
 const dashes = ['none', '7 4', '2 3', '10 3 2 3', '1 5', '14 5'];
 const flagApart = 32;
@@ -110,6 +110,9 @@ export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
           />
         ))}
       </g>
+      <text className="quiet" x={frame.left} y={12}>
+        posterior density
+      </text>
       {letters.map((place) => (
         <text key={place.letter} className="bold page-halo" x={place.x} y={place.y}>
           {place.letter}
@@ -169,7 +172,7 @@ function placeLetters(
   x: (rate: number) => number,
   y: (density: number) => number,
 ) {
-  const top = 14;
+  const top = 30;
   const taken: { x: number; y: number }[] = [];
   return posteriors.map(({ letter, curve, limit }) => {
     let best = { x: x(limit / 2) + 6, y: top, apart: -1 };

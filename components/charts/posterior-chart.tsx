@@ -119,6 +119,9 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
           />
         </clipPath>
       </defs>
+      <text className="quiet" data-file-only="" visibility="hidden" x={frame.left} y={-4}>
+        {isCumulative ? 'cumulative probability' : 'posterior density'}
+      </text>
       {isCumulative && (
         <LeftAxis
           ticks={[0, 0.5, credibleLevel].map((value) => ({

@@ -4,6 +4,7 @@ import Link from 'next/link';
 import { useMemo } from 'react';
 import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
 import { ContrastChart } from '@/components/charts/contrast-chart';
+import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { decidePair, useStar } from '@/components/hooks/use-stars';
 import { useMap } from '@/components/hooks/use-surveys';
@@ -44,7 +45,10 @@ function StoredMap({
     <div className="min-w-0">
       <h3 className="mb-1 font-semibold">{title}</h3>
       {map ? (
-        <CompletenessMapChart map={map} subject={subject} detections={[]} />
+        <>
+          <CompletenessMapChart map={map} subject={subject} detections={[]} />
+          <MassLimitChart map={map} subject={subject} />
+        </>
       ) : (
         <p className="py-2 text-ink3 text-note">{otherwise}</p>
       )}

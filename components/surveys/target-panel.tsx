@@ -3,6 +3,7 @@
 import { useMemo, useState } from 'react';
 import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
 import { ContrastChart } from '@/components/charts/contrast-chart';
+import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { markTarget, useMap } from '@/components/hooks/use-surveys';
@@ -216,6 +217,7 @@ export function TargetPanel(props: TargetPanelProps) {
               range={population ?? undefined}
             />
             <RampKey label="detection probability" />
+            <MassLimitChart map={map} subject={target.name} />
             {population && target.probability !== null && (
               <p className="mt-1 text-ink3 text-note">
                 Its mean over <MassRange definition={population} /> at{' '}
