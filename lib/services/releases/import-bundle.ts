@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { readFile } from 'node:fs/promises';
-import { QueryTypes, type Transaction } from 'sequelize';
+import { DatabaseError, QueryTypes, type Transaction, ValidationError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, InputError } from '@/lib/errors';
@@ -128,7 +128,7 @@ export async function importBundle(
   const files = await unpackFiles(bytes);
   const read = readContent(files, chooseFolder(files, asked));
   const { collaborationId } = actor;
-  const id = await inTransaction(async (transaction) => {
+  const stored = inTransaction(async (transaction) => {
     await select(
       'select id from collaboration where id = $1 for update',
       [collaborationId],
@@ -137,7 +137,7 @@ export async function importBundle(
     const content = await underFreeIds(read, transaction);
     const { recipe } = content;
     const refuse = (folded: string[]) => refuseKnown(actor, content, folded, transaction);
-    const stored = await storeBundle(actor, content, refuse, transaction);
+    const made = await storeBundle(actor, content, refuse, transaction);
     const jobId = await enqueueRecreation(transaction, {
       collaborationId,
       requestedBy: actor.personId,
@@ -145,12 +145,12 @@ export async function importBundle(
     const run = await RunRow.create(
       {
         collaborationId,
-        analysisId: stored.analysis.id,
+        analysisId: made.analysis.id,
         number: 1,
         jobId,
-        recipe: stored.analysis.recipe,
+        recipe: made.analysis.recipe,
         seed: recipe.run.seed,
-        engineVersion: stored.engineVersion,
+        engineVersion: made.engineVersion,
         createdBy: actor.personId,
       },
       { transaction },
@@ -168,12 +168,24 @@ export async function importBundle(
       { transaction },
     );
     const item = { kind: 'run', id: run.id };
-    const summary = `brought a bundle in as A-${stored.analysis.number}`;
+    const summary = `brought a bundle in as A-${made.analysis.number}`;
     await recordAudit(actor, 'import-bundle', item, summary, transaction, { fileSha256 });
     return row.id;
   });
+  const id = await stored.catch(refuseUnstorable);
   const { imports } = await listImports(actor);
   return imports.find((one) => one.id === id) as BundleImportView;
+}
+
+/** What the tables do not take, such as a negative distance, is a fault of the bundle. */
+function refuseUnstorable(error: unknown): never {
+  if (!(error instanceof DatabaseError || error instanceof ValidationError)) throw error;
+  throw new InputError({
+    code: 'value',
+    item: 'the bundle',
+    found: 'a value that cannot be stored, or something twice',
+    expected: 'values within the ranges that the laboratory takes',
+  });
 }
 
 /** The same of a request's body. */

@@ -1,4 +1,4 @@
-import type { Transaction } from 'sequelize';
+import { type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { config } from '@/lib/config';
@@ -95,6 +95,8 @@ export async function checkReleaseAgain(actor: Actor, key: string): Promise<Rele
       throw new Conflict('Only a check that failed or found a difference is done again');
     }
     await row.update({ jobId: null, verification: null }, { transaction });
+    const summary = `had R-${row.number} run again from its inputs`;
+    await recordAudit(actor, 'agree-release', itemOf(row), summary, transaction);
     await checkOnceSigned(actor, row, transaction);
   });
   return getRelease(actor, row.id);
@@ -140,7 +142,7 @@ export async function publishRelease(actor: Actor, key: string): Promise<Release
     runs,
   };
   const files = await makeReleaseFiles(toWrite);
-  await inTransaction(async (transaction) => {
+  const store = inTransaction(async (transaction) => {
     const before = row.signedOffAt?.getTime();
     await lockDraft(row, transaction);
     if (row.signedOffAt?.getTime() !== before || !row.verification?.isSame) {
@@ -162,6 +164,10 @@ export async function publishRelease(actor: Actor, key: string): Promise<Release
     await row.update({ publishedBy, publishedByName, publishedAt }, { transaction });
     await recordAudit(actor, 'publish-release', itemOf(row), `published R-${number}`, transaction);
     await tellMembers(actor, row, 'release-published', transaction);
+  });
+  await store.catch((error: unknown) => {
+    if (!(error instanceof UniqueConstraintError)) throw error;
+    throw new Conflict(`Another release has replaced ${view.replaces?.key} meanwhile`);
   });
   return getRelease(actor, row.id);
 }
