@@ -42,7 +42,7 @@ function Entry({ collaboration, entry }: { collaboration: string; entry: Activit
       <div className="min-w-0 text-note [overflow-wrap:anywhere]">
         <Sentence entry={entry} />
         {excerpt !== null && (
-          <p dir="auto" className="mt-0.5 text-ink2 italic">
+          <p dir="auto" className="mt-0.5 w-fit max-w-full text-ink2 italic">
             {excerpt}
           </p>
         )}

@@ -55,7 +55,7 @@ export function LogTable({ collaboration, entries, onlyItem }: LogTableProps) {
       <TableBody>
         {entries.map((entry) => (
           <Row key={entry.id} className="align-top">
-            <Cell className="whitespace-nowrap pt-2 align-top text-ink3">
+            <Cell className="whitespace-nowrap align-top text-ink3">
               <time dateTime={entry.at}>{moment(entry.at, 'full')}</time>
             </Cell>
             <Cell className="align-top">
@@ -87,7 +87,7 @@ export function LogTable({ collaboration, entries, onlyItem }: LogTableProps) {
               </Link>
             </Cell>
             <Cell className="whitespace-nowrap align-top text-ink2 max-md:hidden">
-              {entry.action}
+              {entry.action.replaceAll('-', ' ')}
             </Cell>
             <Cell className="whitespace-nowrap align-top text-ink3 max-md:hidden">
               {addressWords(entry.address)}

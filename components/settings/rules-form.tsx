@@ -9,7 +9,7 @@ import type { ChangeSettings } from '@/lib/schemas/settings';
 import type { SettingsPartProps } from './place-form';
 
 const ruleLabels: Record<CombinationRule, string> = {
-  default: 'same position where all entries have curves, else the deepest map',
+  default: 'same position where curves allow it, else deepest',
   'same-position': 'same position: no movement between the epochs',
   deepest: 'the deepest map',
   independent: 'independent: each survey is a new chance',
