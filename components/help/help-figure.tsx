@@ -100,9 +100,11 @@ export function HelpFigure({
           d={linePath(curve.x, curve.y, x, y)}
         />
       ))}
-      {curves.map((curve) => (
-        <CurveLabel key={curve.label?.text} curve={curve} x={x} y={y} />
-      ))}
+      {curves
+        .filter(({ label }) => label !== undefined)
+        .map((curve) => (
+          <CurveLabel key={curve.label?.text} curve={curve} x={x} y={y} />
+        ))}
       {flag && (
         <BoundFlag
           x={x(flag.at)}
