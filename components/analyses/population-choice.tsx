@@ -6,11 +6,8 @@ import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
-import {
-  isPlainPowerLaw,
-  type ListedDefinition,
-  type ListedPopulation,
-} from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
+import type { ListedDefinition, ListedPopulation } from '@/lib/schemas/populations';
 
 interface PopulationChoiceProps {
   collaboration: string;

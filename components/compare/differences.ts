@@ -10,7 +10,8 @@ import {
 import { fromLogIndex } from '@/lib/population';
 import { formatRange } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { isPlainPowerLaw, type ListedDefinition } from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
+import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import type { SideAddress } from './address';
 

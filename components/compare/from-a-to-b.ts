@@ -3,7 +3,7 @@ import type { LiveSample } from '@/components/runs/live-sample';
 import { isSameSetting, type LiveSetting, settingOfRecipe } from '@/components/runs/live-setting';
 import { answerFromView, type PopulationView, viewPopulation } from '@/lib/inference';
 import { type OrderStep, stepsOverOrders } from '@/lib/inference/order-steps';
-import { isPlainPowerLaw } from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ComparedRun } from './differences';
 
 interface Ends {

@@ -9,7 +9,7 @@ import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
 import { useMoment } from '@/components/ui/time-zone';
-import { type Role, roleSchema } from '@/lib/schemas/common';
+import type { Role } from '@/lib/schemas/common';
 import type { MemberView } from '@/lib/schemas/people';
 import { RoleFields, roleWords } from './role-fields';
 
@@ -59,7 +59,7 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
         legend="May act as"
         roles={roles}
         onChange={setRoles}
-        offered={roleSchema.options}
+        offered={Object.keys(roleWords) as Role[]}
       />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
     </Dialog>

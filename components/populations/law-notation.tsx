@@ -3,7 +3,8 @@ import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { describePopulation } from '@/lib/inference';
 import { type AxisConvention, fromLogIndex } from '@/lib/population';
 import { formatPlain, formatRange, THIN_SPACE } from '@/lib/quantities/display';
-import { isPlainPowerLaw, type ListedDefinition } from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
+import type { ListedDefinition } from '@/lib/schemas/populations';
 
 /** An index with at most three decimals and a true minus sign. */
 export function formatIndex(value: number): string {

@@ -10,11 +10,8 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
-import {
-  isPlainPowerLaw,
-  type ListedPopulation,
-  type PowerLawDefinition,
-} from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
+import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
 import {
   isSameSetting,

@@ -6,7 +6,8 @@ import {
   type AnalysisView,
   analysisRecipeSchema,
 } from '@/lib/schemas/analyses';
-import { isPlainPowerLaw, type ListedPopulation } from '@/lib/schemas/populations';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 import { isSameDefinition, type LiveSetting } from './live-setting';
 
 /**

@@ -20,17 +20,18 @@ const chromium = '/usr/bin/chromium';
 /** @returns {string | null} the folder of an up-to-date build; a product's own is only read */
 const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
 
-/** Builds the web part, and weighs what each page of it loads first. @returns {Promise<Count>} */
+/**
+ * Builds the web part, and says what each page of it loads first; `node lib/local/page-sizes.mjs`
+ * fails where that is too much.
+ *
+ * @returns {Promise<Count>}
+ */
 export async function checkBuild() {
   if (freshBuild() === null) await buildWeb(testDistFolder);
   const pages = measurePages(freshBuild() ?? testDistFolder);
-  const large = pages.filter(({ bytes }) => bytes > MOST_BYTES);
-  const head = `Compressed JavaScript of the first load, at most ${MOST_BYTES / 1000} kB a page:`;
-  return {
-    passed: 1 + pages.length - large.length,
-    failed: large.length,
-    notes: [[head, ...pages.map(sizeLine)].join('\n')],
-  };
+  const large = pages.filter(({ bytes }) => bytes > MOST_BYTES).length;
+  const head = `Compressed JavaScript of the first load; ${large} of ${pages.length} pages above ${MOST_BYTES / 1000} kB:`;
+  return { passed: 1, failed: 0, notes: [[head, ...pages.map(sizeLine)].join('\n')] };
 }
 
 /**

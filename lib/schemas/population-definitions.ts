@@ -159,10 +159,3 @@ export type PowerLawDefinition = z.infer<typeof powerLawDefinitionSchema>;
 
 /** Laws on one box for all stars. */
 export type BoxedDefinition = PowerLawDefinition | z.infer<typeof shapedDefinitionSchema>;
-
-/** Whether a definition is such a power law. */
-export function isPlainPowerLaw(
-  definition: PopulationDefinition | ListedDefinition,
-): definition is PowerLawDefinition {
-  return definition.form === 'power-law' && definition.hostScaling === undefined;
-}

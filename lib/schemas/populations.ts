@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { idSchema, lineSchema, moment } from './common';
 import { listedDefinitionSchema, populationDefinitionSchema } from './population-definitions';
 
+export { isPlainPowerLaw } from './plain-power-law';
 export type {
   BoxedDefinition,
   ListedDefinition,
@@ -9,7 +10,6 @@ export type {
   PowerLawDefinition,
 } from './population-definitions';
 export {
-  isPlainPowerLaw,
   listedDefinitionSchema,
   populationDefinitionSchema,
 } from './population-definitions';
