@@ -19,9 +19,11 @@ const looks: Record<HelpCurve['look'], string> = {
   dashed: 'alternative-line',
 };
 
+/** Server and browser differ in the last bit of a logarithm: what both write must not show it. */
 function scaleOf({ scale, domain }: HelpAxis, range: [number, number]) {
   const make = scale === 'log' ? scaleLog : scaleLinear;
-  return make([domain[0], domain[1]], range);
+  const place = make([domain[0], domain[1]], range);
+  return (value: number) => Math.round(100 * place(value)) / 100;
 }
 
 const ticksOf = ({ ticks, times = 1 }: HelpAxis): Tick[] =>

@@ -17,7 +17,7 @@ export function contrast(): HelpDrawing {
     x: { name: 'separation, arcsec', scale: 'log', domain: [0.1, 3], ticks: [0.1, 0.2, 0.5, 1, 2] },
     y: { name: 'contrast, mag', scale: 'linear', domain: [16, 6], ticks: [6, 8, 10, 12, 14, 16] },
     curves: [
-      named(draw(x, limit, 'data'), 'limit at 5 σ', 0.72, 'below'),
+      named(draw(x, limit, 'data'), 'limit at 5 σ', 0.72),
       named(
         draw(x, () => 12, 'dashed'),
         'companion',
