@@ -90,15 +90,15 @@ export function MassLimitChart({ map, subject, height = 230 }: MassLimitChartPro
         <path key={share} className={classOf[share]} d={linePath(au, limits[index], x, y)} />
       ))}
       {shares.map((share, index) => {
-        const best = lowest(limits[index]);
+        const place = namePlace(limits[index], au, { x, y }, frame.right, share === 0.5);
         return (
-          best !== undefined && (
+          place && (
             <text
               key={share}
               className="bold page-halo"
-              x={x(au[best])}
-              y={y(limits[index][best]) + (index === 0 ? 18 : -8)}
-              textAnchor="middle"
+              x={place.x}
+              y={place.y}
+              textAnchor={place.anchor}
             >
               seen {100 * share}
               {'\u2009'}% of the time
@@ -135,6 +135,24 @@ function lowest(limits: Float64Array): number | undefined {
     }
   }
   return best;
+}
+
+/** The lower line is named under its best place, the upper one at its end: they may lie close. */
+function namePlace(
+  limits: Float64Array,
+  au: Float64Array,
+  { x, y }: { x(au: number): number; y(mass: number): number },
+  right: number,
+  isLower: boolean,
+) {
+  const best = lowest(limits);
+  if (best === undefined) return undefined;
+  if (isLower) return { x: x(au[best]), y: y(limits[best]) + 18, anchor: 'middle' } as const;
+  const end = limits.findLastIndex(Number.isFinite);
+  const at = { x: x(au[end]), y: y(limits[end]) };
+  return at.x + 150 < right
+    ? ({ x: at.x + 8, y: at.y + 4, anchor: 'start' } as const)
+    : ({ x: right, y: at.y - 8, anchor: 'end' } as const);
 }
 
 const massWords = (mass: number) =>

@@ -30,7 +30,7 @@ interface Kept {
   names: ReadonlySet<string>;
 }
 
-const choose = 'choose stars, press a dot, or draw a frame around dots';
+const choose = 'choose, press a dot or frame dots';
 
 /** The limit without some stars, and those answers that are kept to compare with. */
 export function LeaveOut(props: LeaveOutProps) {
