@@ -4,35 +4,18 @@ import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
-import { ChartFigure, type ChartTable } from './chart-figure';
+import { ChartFigure } from './chart-figure';
 import { PointReadout } from './chart-readout';
-import type { DataTable } from './data-table';
 import type { Box } from './map-contours';
+import { type MotionEpoch, type MotionPlace, motionColumns, motionTable } from './motion-tables';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
-interface Place {
-  eastArcsec: number;
-  northArcsec: number;
-}
+export type { MotionEpoch };
 
-export interface TrackPoint extends Place {
+export interface TrackPoint extends MotionPlace {
   julianYear: number;
-}
-
-/** One epoch: where the source was, and where it would have been as a background source. */
-export interface MotionEpoch extends Place {
-  id: string;
-  date: string;
-  isReference: boolean;
-  /** 1 σ; null where none is known. */
-  errorEastArcsec: number | null;
-  errorNorthArcsec: number | null;
-  background: Place | null;
-  /** Distance from each hypothesis in σ; null where it was not tested. */
-  sigmaCommon: number | null;
-  sigmaBackground: number | null;
 }
 
 export interface MotionTrackChartProps {
@@ -60,7 +43,10 @@ export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps)
     bottom: height - margin.bottom,
   };
   const { x, y } = scalesOf(epochs, track, frame);
-  const place = ({ eastArcsec, northArcsec }: Place) => ({ x: x(eastArcsec), y: y(northArcsec) });
+  const place = ({ eastArcsec, northArcsec }: MotionPlace) => ({
+    x: x(eastArcsec),
+    y: y(northArcsec),
+  });
   const seen = epochs.map(place);
   const chosen = at === undefined ? undefined : seen[at];
   const reference = epochs.find(({ isReference }) => isReference);
@@ -152,7 +138,7 @@ function scalesOf(epochs: MotionEpoch[], track: TrackPoint[], frame: Box) {
       northArcsec: northArcsec + side * (errorNorthArcsec ?? 0),
     })),
   );
-  const places: Place[] = [...ends, ...track];
+  const places: MotionPlace[] = [...ends, ...track];
   const east = places.map(({ eastArcsec }) => eastArcsec);
   const north = places.map(({ northArcsec }) => northArcsec);
   const middle = (values: number[]) => (Math.min(...values) + Math.max(...values)) / 2;
@@ -302,64 +288,4 @@ export function motionSentence({ name, epochs, track }: MotionTrackChartProps): 
     );
   }
   return parts.join('; ');
-}
-
-function motionColumns(epochs: MotionEpoch[]): DataTable {
-  return {
-    name: 'epochs',
-    columns: [
-      'date',
-      'east_arcsec',
-      'east_error_arcsec',
-      'north_arcsec',
-      'north_error_arcsec',
-      'background_east_arcsec',
-      'background_north_arcsec',
-      'sigma_common_motion',
-      'sigma_background',
-    ],
-    rows: epochs.map((epoch) => [
-      epoch.date,
-      epoch.eastArcsec,
-      epoch.errorEastArcsec,
-      epoch.northArcsec,
-      epoch.errorNorthArcsec,
-      epoch.background?.eastArcsec ?? null,
-      epoch.background?.northArcsec ?? null,
-      epoch.sigmaCommon,
-      epoch.sigmaBackground,
-    ]),
-  };
-}
-
-function motionTable(name: string, epochs: MotionEpoch[]): ChartTable {
-  const at = (value: number | null | undefined) =>
-    value === null || value === undefined ? '–' : value.toFixed(4);
-  const sigma = (value: number | null, epoch: MotionEpoch) =>
-    epoch.isReference ? 'reference' : value === null ? '–' : formatSignificant(value, 3);
-  return {
-    caption: `Measured offsets of ${name} and those of a source at rest behind its star, arcsec`,
-    columns: [
-      'epoch',
-      'east',
-      'error',
-      'north',
-      'error of north',
-      'east, background',
-      'north, background',
-      'σ from common motion',
-      'σ from background',
-    ],
-    rows: epochs.map((epoch) => [
-      epoch.date,
-      at(epoch.eastArcsec),
-      at(epoch.errorEastArcsec),
-      at(epoch.northArcsec),
-      at(epoch.errorNorthArcsec),
-      at(epoch.background?.eastArcsec),
-      at(epoch.background?.northArcsec),
-      sigma(epoch.sigmaCommon, epoch),
-      sigma(epoch.sigmaBackground, epoch),
-    ]),
-  };
 }
