@@ -16,6 +16,7 @@ export class PersonRow extends Model<
   declare email: string;
   declare name: string;
   declare passwordHash: string;
+  declare orcid: CreationOptional<string | null>;
   declare suspendedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
 }
@@ -27,6 +28,7 @@ export function definePerson(sequelize: Sequelize): void {
       email: DataTypes.TEXT,
       name: DataTypes.TEXT,
       passwordHash: DataTypes.TEXT,
+      orcid: DataTypes.TEXT,
       suspendedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
     },

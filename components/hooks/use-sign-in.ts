@@ -1,8 +1,9 @@
 'use client';
 
+import type { LinkPurpose } from '@/lib/schemas/account-access';
 import type { InvitationOffer, Me, SignUp } from '@/lib/schemas/people';
 import { answer } from './answer';
-import { request } from './request';
+import { request, requestNothing } from './request';
 
 /** Starts a session; a refusal comes back as the sentence that the form shows. */
 export async function startSession(email: string, password: string): Promise<string | null> {
@@ -16,6 +17,15 @@ export async function startSession(email: string, password: string): Promise<str
 export async function endSession(): Promise<unknown> {
   const { signOut } = await import('next-auth/react');
   return signOut({ callbackUrl: '/sign-in' });
+}
+
+/** Sends a link, where there is such an account. */
+export function askLink(email: string, purpose: LinkPurpose): Promise<void> {
+  return requestNothing('/api/v1/account-links', { method: 'POST', body: { email, purpose } });
+}
+
+export function resetPassword(code: string, password: string): Promise<void> {
+  return requestNothing('/api/v1/password-reset', { method: 'POST', body: { code, password } });
 }
 
 export function signUp(body: SignUp): Promise<unknown> {

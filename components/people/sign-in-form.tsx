@@ -37,6 +37,11 @@ export function SignInForm({ next }: { next: string }) {
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Sign in
       </Button>
+      <p className="flex flex-wrap gap-x-5 gap-y-1 text-[14px] text-ink3">
+        <Link className="underline underline-offset-3" href="/reset">
+          Forgotten the password?
+        </Link>
+      </p>
       <p className="text-[14px] text-ink3">
         Invited by a collaboration? Open the link in the invitation. No account yet?{' '}
         <Link className="underline underline-offset-3" href="/sign-up">

@@ -8,6 +8,7 @@ import type { Sequelize } from 'sequelize';
 import { config } from '@/lib/config';
 import { TooMany } from '@/lib/errors';
 import { database } from '@/models';
+import { sha256Hex } from '@/models/digest';
 
 const MINUTE_S = 60;
 
@@ -23,11 +24,17 @@ export const limits = {
   uploads: { points: 120, seconds: MINUTE_S },
   // A page draws its figures one by one; each is a few milliseconds of work.
   figures: { points: 120, seconds: MINUTE_S },
+  'link-address': { points: 30, seconds: 15 * MINUTE_S },
+  'link-account': { points: 3, seconds: 15 * MINUTE_S },
+  'reset-address': { points: 20, seconds: 15 * MINUTE_S },
   'password-changes': { points: 10, seconds: 15 * MINUTE_S },
   notes: { points: 120, seconds: 60 * MINUTE_S },
   invitations: { points: 60, seconds: 60 * MINUTE_S },
 } as const;
 export type LimitName = keyof typeof limits;
+
+/** Addresses of mail stand in no table of attempts in clear. */
+export const attemptKey = (email: string) => sha256Hex(email).slice(0, 32);
 
 const limiters = new WeakMap<Sequelize, Map<LimitName, RateLimiterAbstract>>();
 

@@ -8,6 +8,7 @@ import {
   updateCollaborationSchema,
   updateMeSchema,
 } from './account';
+import { accountRoutes } from './account-access';
 import {
   analysisSchema,
   copyAnalysisSchema,
@@ -350,6 +351,7 @@ const itself = route('get', '/api/v1/openapi.json', 'open', 'This document', {
 export const apiRoutes: readonly ApiRoute[] = [
   itself,
   ...people,
+  ...accountRoutes,
   ...surveys,
   ...releaseRoutes,
   ...sampleRoutes,

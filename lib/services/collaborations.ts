@@ -22,7 +22,18 @@ const RESERVED = new Set([
     'mailbox',
     'me',
   ],
-  ...['new', 'password', 'people', 'public', 'r', 'release', 'releases', 'settings', 'sign-in'],
+  ...[
+    'new',
+    'password',
+    'people',
+    'public',
+    'r',
+    'release',
+    'releases',
+    'reset',
+    'settings',
+    'sign-in',
+  ],
   ...['log', 'mail', 'activity', 'sign-out', 'sign-up', 'start', 'static', 'tokens', 'welcome'],
 ]);
 

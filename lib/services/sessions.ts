@@ -1,6 +1,6 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { KnownPerson } from '@/lib/access/actor';
-import { countAttempt, forgetAttempts, uncountAttempt } from '@/lib/access/attempts';
+import { attemptKey, countAttempt, forgetAttempts, uncountAttempt } from '@/lib/access/attempts';
 import { isPassword } from '@/lib/access/passwords';
 import { beginSession, endSessions, SESSION_IDLE_DAYS } from '@/lib/access/sessions';
 import { LabError, NotFound } from '@/lib/errors';
@@ -8,7 +8,6 @@ import { type SessionView, sessionSchema } from '@/lib/schemas/account';
 import { idSchema } from '@/lib/schemas/common';
 import { signInSchema } from '@/lib/schemas/people';
 import { database, inTransaction, PersonRow } from '@/models';
-import { sha256Hex } from '@/models/digest';
 import { recordAudit } from './audit';
 
 export interface SignInAttempt {
@@ -29,9 +28,6 @@ export interface SignedIn {
 const TOO_MANY = 'Too many wrong passwords.';
 /** One sentence for both, so that it does not tell which accounts exist. */
 const WRONG = 'The address or the password is wrong.';
-
-/** Addresses of mail stand in no table of attempts in clear. */
-const attemptKey = (email: string) => sha256Hex(email).slice(0, 32);
 
 async function recordSignIn(
   personId: string,
