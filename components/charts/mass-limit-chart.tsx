@@ -148,7 +148,7 @@ function namePlace(
   const best = lowest(limits);
   if (best === undefined) return undefined;
   if (isLower) return { x: x(au[best]), y: y(limits[best]) + 18, anchor: 'middle' } as const;
-  const end = limits.findLastIndex(Number.isFinite);
+  const end = limits.reduce((last, limit, i) => (Number.isFinite(limit) ? i : last), -1);
   const at = { x: x(au[end]), y: y(limits[end]) };
   return at.x + 150 < right
     ? ({ x: at.x + 8, y: at.y + 4, anchor: 'start' } as const)

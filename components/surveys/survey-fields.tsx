@@ -14,9 +14,7 @@ export const loadSurveyFacts = async () =>
   });
 
 type SurveyFacts = Awaited<ReturnType<typeof loadSurveyFacts>>;
-type SurveyFactsForm = ReturnType<
-  typeof useSchemaForm<SurveyFacts['_zod']['input'], SurveyFacts['_zod']['output']>
->;
+type SurveyFactsForm = ReturnType<typeof useSchemaForm<SurveyFacts>>;
 
 const asYear = {
   setValueAs: (text: unknown) => (text === '' || text === null ? null : Number(text)),

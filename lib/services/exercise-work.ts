@@ -162,12 +162,16 @@ export async function exportExercise(
 ): Promise<{ fileName: string; text: string }> {
   demand(actor, 'make-exercise');
   const { participants, reference } = await getExercise(actor, key);
-  const rows = participants.flatMap((participant) =>
+  type Participant = (typeof participants)[number];
+  interface Entry {
+    participant: Participant;
+    submission: Participant['submissions'][number] | null;
+  }
+  const rows = participants.flatMap((participant): Entry[] =>
     participant.submissions.length === 0
       ? [{ participant, submission: null }]
       : participant.submissions.map((submission) => ({ participant, submission })),
   );
-  type Entry = (typeof rows)[number];
   const column = (name: string, value: (row: Entry) => string | number | null) => ({
     name,
     values: rows.map((row) => {

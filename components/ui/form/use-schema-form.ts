@@ -11,13 +11,15 @@ import {
   type Resolver,
   useForm,
 } from 'react-hook-form';
-import type { ZodType } from 'zod';
+import type { input, output, ZodType } from 'zod';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { faultWords, wantedWords } from './field-words';
 
+type Loads<In, Out> = () => Promise<ZodType<Out, In>>;
+
 /** Loaded with the first field that is left: a form is drawn without it. */
 async function loadResolver<In extends FieldValues, Out>(
-  schema: () => Promise<ZodType<Out, In>>,
+  schema: Loads<In, Out>,
 ): Promise<Resolver<In, unknown, Out>> {
   const [{ zodResolver }, wanted] = await Promise.all([
     import('@hookform/resolvers/zod'),
@@ -26,17 +28,23 @@ async function loadResolver<In extends FieldValues, Out>(
   return zodResolver(wanted);
 }
 
+/** A schema of a form: what its fields hold is an object. */
+type FormSchema = ZodType<unknown, FieldValues>;
+
 /**
- * A form over the schema that its route parses by, given by what loads it. What the schema refuses is said at the field on
- * leaving it; what the server refuses lands on its field where the fault names one, and else in
- * `refusal`.
+ * A form over the schema that its route parses by, given by what loads it. What the schema refuses
+ * is said at the field on leaving it; what the server refuses lands on its field where the fault
+ * names one, and else in `refusal`.
  */
-export function useSchemaForm<In extends FieldValues, Out>(
-  schema: () => Promise<ZodType<Out, In>>,
-  defaultValues: DefaultValues<In>,
+export function useSchemaForm<Schema extends FormSchema>(
+  schema: () => Promise<Schema>,
+  defaultValues: DefaultValues<input<Schema>>,
 ) {
+  type In = input<Schema>;
+  type Out = output<Schema>;
   const form = useForm<In, unknown, Out>({
-    resolver: async (...asked) => (await loadResolver(schema))(...asked),
+    resolver: async (...asked) =>
+      (await loadResolver<In, Out>(schema as unknown as Loads<In, Out>))(...asked),
     defaultValues,
     mode: 'onTouched',
   });
