@@ -1,6 +1,5 @@
-import { z } from 'zod';
 import { type ApiRoute, route, team } from './api-route';
-import { exportListSchema, exportQuerySchema } from './exports';
+import { exportListSchema, exportQuerySchema, runExportQuerySchema } from './exports';
 
 const tables = [
   'text/csv',
@@ -53,10 +52,7 @@ export const exportRoutes: readonly ApiRoute[] = [
     'read',
     'A run as table, maps, text or figure',
     {
-      query: exportQuerySchema.extend({
-        /** Of the figure, mm. */
-        width: z.enum(['88', '180']).optional(),
-      }),
+      query: runExportQuerySchema,
       files: runFiles,
     },
   ),

@@ -31,3 +31,9 @@ export const exportQuerySchema = z.strictObject({
   /** Of maps: float32 unless asked. */
   precision: z.enum(['float32', 'float64']).optional(),
 });
+
+/** Of a run, whose figures have a width. */
+export const runExportQuerySchema = exportQuerySchema.extend({
+  /** Of the figure, mm: one column or two. */
+  width: z.enum(['88', '180']).default('88'),
+});

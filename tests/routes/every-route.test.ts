@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { type ZodType, z } from 'zod';
 import type { RouteHandler } from '@/app/api/v1/handler';
 import { type ApiRoute, apiRoutes } from '@/lib/schemas/api-routes';
 import { database } from '@/models';
@@ -63,20 +64,23 @@ beforeEach(async () => {
   await database().query('delete from rate_limit');
 });
 
+async function handlerOf({ path, method }: ApiRoute): Promise<RouteHandler> {
+  const file = `/app${path.replace(/\{(\w+)\}/g, '[$1]')}/route.ts`;
+  return (await modules[file]())[method.toUpperCase()];
+}
+
 async function ask(
   route: ApiRoute,
   headers: Record<string, string>,
-  { id = () => randomUUID(), body }: { id?: (name: string) => string; body?: unknown } = {},
+  { id = () => randomUUID(), body = {} }: { id?: (name: string) => string; body?: unknown } = {},
 ): Promise<Response> {
-  const file = `${route.path.replace(/\{(\w+)\}/g, '[$1]')}/route.ts`;
   const method = route.method.toUpperCase();
-  const module = await modules[`/app${file}`]();
   const params = Object.fromEntries(idsIn(route).map((name) => [name, id(name)]));
-  return call(module[method], {
+  return call(await handlerOf(route), {
     method,
     params: { collaboration: team.collaboration.slug, ...params },
     headers,
-    body: isWrite(route) && !route.isUpload ? (body ?? {}) : undefined,
+    body: isWrite(route) && !route.isUpload ? body : undefined,
   });
 }
 
@@ -143,4 +147,19 @@ it('a person who was removed is an outsider at the next request', async () => {
   await query('delete from member where id = $1', [membership]);
   expect([401, 404]).toContain(await statusOf(reading, token));
   expect(await statusOf(reading, { cookie })).toBe(404);
+});
+
+const shapeOf = (schema: ZodType) =>
+  z.toJSONSchema(schema, { io: 'input', unrepresentable: 'any' });
+const everyRoute = apiRoutes.map((route) => [`${route.method} ${route.path}`, route] as const);
+
+it.each(everyRoute)('is described as it is: %s', async (_, route) => {
+  const { asks } = await handlerOf(route);
+  // A token that comes to a session's work is turned away by the work itself.
+  if (route.access !== 'session') expect(asks.access).toBe(route.access);
+  else expect(asks.access).not.toBe('open');
+  expect(route.body && shapeOf(route.body)).toEqual(asks.body && shapeOf(asks.body));
+  expect(route.query && shapeOf(route.query)).toEqual(asks.query && shapeOf(asks.query));
+  if (asks.status) expect(route.status).toBe(asks.status);
+  else if (route.answer ?? route.files) expect(route.status ?? 200).toBe(200);
 });

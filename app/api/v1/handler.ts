@@ -30,7 +30,26 @@ interface Asked<B, Q> {
 }
 
 type RouteContext = { params: Promise<Record<string, string>> };
-export type RouteHandler = (request: Request, context: RouteContext) => Promise<Response>;
+
+/** What a handler was made with, so that its description can be held against it. */
+interface Asks {
+  /** `open` where nobody needs to be signed in. */
+  access: Scope | 'session' | 'open';
+  status?: number;
+  body?: ZodType;
+  query?: ZodType;
+}
+export type RouteHandler = ((request: Request, context: RouteContext) => Promise<Response>) & {
+  readonly asks: Asks;
+};
+
+function handler(
+  access: Asks['access'],
+  { status, body, query }: Pick<Asks, 'status' | 'body' | 'query'>,
+  work: (request: Request, context: RouteContext) => Promise<Response>,
+): RouteHandler {
+  return Object.assign(work, { asks: { access, status, body, query } });
+}
 
 /** A request without a body needs no content type: its Origin was looked at. */
 const hasBody = ({ headers }: Request) =>
@@ -129,7 +148,7 @@ export function collaborationRoute<B = undefined, Q = undefined>(
   options: RouteOptions<B, Q> & { scope: Scope },
   work: (context: Asked<B, Q> & { actor: Actor }) => Promise<unknown>,
 ): RouteHandler {
-  return (request, context) =>
+  return handler(options.scope, options, (request, context) =>
     answer(request, options.status ?? 200, async (seen) => {
       const person = await admit(request, options);
       if (!person) throw new NotSignedIn();
@@ -139,7 +158,8 @@ export function collaborationRoute<B = undefined, Q = undefined>(
       requireScope(person, options.scope);
       await countOwn(options as RouteOptions<never, never>, person.personId);
       return work({ ...(await readRequest(request, context, options)), actor });
-    });
+    }),
+  );
 }
 
 /** A handler for a signed-in person, outside of any collaboration. */
@@ -147,7 +167,7 @@ export function personRoute<B = undefined, Q = undefined>(
   options: RouteOptions<B, Q> & { scope: Scope; sessionOnly?: boolean },
   work: (context: Asked<B, Q> & { person: KnownPerson }) => Promise<unknown>,
 ): RouteHandler {
-  return (request, context) =>
+  return handler(options.sessionOnly ? 'session' : options.scope, options, (request, context) =>
     answer(request, options.status ?? 200, async (seen) => {
       const person = await admit(request, options);
       if (!person) throw new NotSignedIn();
@@ -158,7 +178,8 @@ export function personRoute<B = undefined, Q = undefined>(
       requireScope(person, options.scope);
       await countOwn(options as RouteOptions<never, never>, person.personId);
       return work({ ...(await readRequest(request, context, options)), person });
-    });
+    }),
+  );
 }
 
 /** A handler for anybody; who is signed in is told to the work, if anybody is. */
@@ -168,7 +189,7 @@ export function openRoute<B = undefined, Q = undefined>(
     context: Asked<B, Q> & { person: KnownPerson | null; address: string },
   ) => Promise<unknown>,
 ): RouteHandler {
-  return (request, context) =>
+  return handler('open', options, (request, context) =>
     answer(request, options.status ?? 200, async (seen) => {
       const address = addressOf(request.headers);
       await countAttempt('anonymous-requests', address, 'Too many requests come from here.');
@@ -179,5 +200,6 @@ export function openRoute<B = undefined, Q = undefined>(
       });
       if (person) seen.person = person;
       return work({ ...(await readRequest(request, context, options)), person, address });
-    });
+    }),
+  );
 }

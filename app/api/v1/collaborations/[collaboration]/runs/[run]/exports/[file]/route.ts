@@ -1,20 +1,14 @@
-import { z } from 'zod';
 import { attachment } from '@/app/api/v1/attachment';
 import { collaborationRoute } from '@/app/api/v1/handler';
 import type { Actor } from '@/lib/access/actor';
-import { exportQuerySchema } from '@/lib/schemas/exports';
+import { runExportQuerySchema } from '@/lib/schemas/exports';
 import { exportName, exportRun, getFinishedRun, recordExport } from '@/lib/services/exports';
 import { figureAsPdf } from '@/lib/services/figures';
 import { drawPosterior } from './posterior-drawing';
 
-const querySchema = exportQuerySchema.extend({
-  /** Of the figure, mm: one column or two. */
-  width: z.enum(['88', '180']).default('88'),
-});
-
 /** Files of a finished run, as attachments: tables, maps, words, everything, figures. */
 export const GET = collaborationRoute(
-  { scope: 'read', query: querySchema },
+  { scope: 'read', query: runExportQuerySchema },
   async ({ actor, params, query }) => {
     const { width, ...options } = query;
     return attachment(
