@@ -4,7 +4,7 @@ import Link from 'next/link';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useSamplePreview, useSamples } from '@/components/hooks/use-samples';
 import { SelectField } from '@/components/ui/select-field';
-import { type SamplePreview, sampleDefinitionSchema } from '@/lib/schemas/samples';
+import type { SampleDefinition, SamplePreview } from '@/lib/schemas/samples';
 
 interface SampleChoiceProps {
   collaboration: string;
@@ -13,7 +13,7 @@ interface SampleChoiceProps {
   onChange(sampleId: string | undefined): void;
 }
 
-const EVERY_STAR = sampleDefinitionSchema.parse({});
+const EVERY_STAR: SampleDefinition = { knownCompanion: 'left-out', unknown: 'left-out' };
 
 /** Which of the surveys' stars the analysis rests on: all, or those of a saved sample. */
 export function SampleChoice({ collaboration, surveyIds, chosen, onChange }: SampleChoiceProps) {

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { useState } from 'react';
 import { formatLimit, type RateQuantity, rateUnit } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
@@ -8,6 +7,7 @@ import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { fitText } from './fit-text';
 import { spokenLimit } from './limit-bands';
+import { scaleLinear, scaleLog } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useId, useMemo, useState } from 'react';
 import { formatPlain, formatRange } from '@/lib/quantities/display';
 import { ChartFigure, type ChartTable } from './chart-figure';
@@ -11,6 +10,7 @@ import { MapAxes, MapBands, type MapFrame, mapFrame } from './map-layers';
 import { areaPath } from './paths';
 import { type MapRange, RangeHandles } from './range-box';
 import { CursorRing } from './reading-marks';
+import { scaleLinear } from './scales';
 import { useWidth } from './use-width';
 
 /** Planets drawn from a population, with what the surveys would see of them. */

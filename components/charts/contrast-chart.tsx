@@ -1,6 +1,6 @@
 'use client';
 
-import { quantile, scaleLinear, scaleLog } from 'd3';
+import { quantile } from 'd3';
 import { memo, useMemo, useState } from 'react';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -9,6 +9,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import type { DataTable } from './data-table';
 import { bandPath, linePath, valueAt } from './paths';
 import { CursorMarks } from './reading-marks';
+import { scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 

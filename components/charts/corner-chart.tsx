@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { type ReactNode, useMemo, useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
@@ -9,6 +8,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import { type JointPlane, jointAreas } from './joint-contours';
 import type { Box } from './map-contours';
 import { areaPath, linePath } from './paths';
+import { type Scale, scaleLinear } from './scales';
 import { linearTicks } from './ticks';
 import { useWidth } from './use-width';
 
@@ -148,8 +148,6 @@ function cellTicks({ value }: CornerParameter, cell: Cell, isLabelled: boolean) 
   );
   return isLabelled ? ticks : ticks.map((tick) => ({ ...tick, label: undefined }));
 }
-
-type Scale = ReturnType<typeof scaleLinear<number, number>>;
 
 function RowAxis({ cell, y, parameter }: { cell: Cell; y: Scale; parameter: CornerParameter }) {
   const { value } = parameter;

@@ -1,11 +1,11 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
+import { scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { useState } from 'react';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -10,6 +9,7 @@ import { mapMargin } from './completeness-map-chart';
 import { tableOfColumns } from './data-table';
 import { bandPath, linePath } from './paths';
 import { CursorMarks } from './reading-marks';
+import { scaleLinear, scaleLog } from './scales';
 import { seriesColour, seriesTextColour } from './series';
 import { textWidth } from './text-width';
 import { linearTicks, logTicks } from './ticks';

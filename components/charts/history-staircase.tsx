@@ -1,12 +1,12 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatLimit, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { CursorMarks } from './reading-marks';
+import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

@@ -1,6 +1,6 @@
 'use client';
 
-import { contours, scaleLinear } from 'd3';
+import { contours } from 'd3';
 import { useMemo, useState } from 'react';
 import { formatLimit, formatPlain, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -9,6 +9,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import { tableOfField } from './data-table';
 import { type Box, boxesMeet } from './map-contours';
 import { CursorRing } from './reading-marks';
+import { scaleLinear } from './scales';
 import { linearTicks } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,5 +1,5 @@
-import { scaleLinear } from 'd3';
 import type { Box } from './map-contours';
+import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
 
 export interface InfluenceStar {

@@ -1,8 +1,8 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import type { ReactNode } from 'react';
 import { formatLevel } from './posterior-words';
+import { scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 
 export interface LimitInterval {

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLog } from 'd3';
 import { useState } from 'react';
 import {
   formatInterval,
@@ -15,6 +14,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
 import { bandPath, linePath } from './paths';
+import { scaleLog } from './scales';
 import { textWidth } from './text-width';
 import { logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { type ReactNode, useMemo, useState } from 'react';
 import { formatLimit, formatPlain, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -10,6 +9,7 @@ import { DetectionMarks, type MapDetection } from './detection-marks';
 import { spokenLimit } from './limit-bands';
 import { LimitField } from './limit-field';
 import type { Box } from './map-contours';
+import { scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { useState } from 'react';
 import { formatLimit, formatPlain, type RateQuantity, rateUnit } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -10,6 +9,7 @@ import { spokenLimit } from './limit-bands';
 import type { FieldAxis } from './limit-field-chart';
 import type { Box } from './map-contours';
 import { linePath } from './paths';
+import { scaleLinear, scaleLog } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

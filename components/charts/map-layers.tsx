@@ -1,9 +1,9 @@
 'use client';
 
-import { scaleLog } from 'd3';
 import { memo, useMemo } from 'react';
 import { BottomAxis, JupiterMassText, LeftAxis } from './axes';
 import { type Box, isobands, isolines, labelPoint, type MapData } from './map-contours';
+import { scaleLog } from './scales';
 import { logTicks } from './ticks';
 
 export interface MapFrame extends Box {

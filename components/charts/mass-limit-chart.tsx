@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLog } from 'd3';
 import { useMemo, useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { massLimits } from '@/lib/sensitivity/mass-limits';
@@ -12,6 +11,7 @@ import { tableOfColumns } from './data-table';
 import type { MapData } from './map-contours';
 import { linePath } from './paths';
 import { CursorMarks } from './reading-marks';
+import { scaleLog } from './scales';
 import { logTicks } from './ticks';
 import { useWidth } from './use-width';
 

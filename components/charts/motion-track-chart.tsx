@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -8,6 +7,7 @@ import { ChartFigure } from './chart-figure';
 import { PointReadout } from './chart-readout';
 import type { Box } from './map-contours';
 import { type MotionEpoch, type MotionPlace, motionColumns, motionTable } from './motion-tables';
+import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

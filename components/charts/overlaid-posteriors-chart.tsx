@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useId, useMemo, useState } from 'react';
 import { formatRate, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
@@ -12,6 +11,7 @@ import { areaPath, linePath, valueAt } from './paths';
 import { limitWithLevel } from './posterior-words';
 import type { RateCurve } from './rate-curve';
 import { CursorMarks } from './reading-marks';
+import { scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useId, useMemo, useState } from 'react';
 import { BottomAxis, LeftAxis } from './axes';
 import { BoundFlag } from './bound-flag';
@@ -19,6 +18,7 @@ import {
   sayPosterior,
 } from './posterior-words';
 import { CursorMarks } from './reading-marks';
+import { scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 

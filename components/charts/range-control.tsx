@@ -1,10 +1,10 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { type KeyboardEvent, type PointerEvent, type ReactNode, useRef, useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { areaPath } from './paths';
+import { scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks } from './ticks';
 import { useWidth } from './use-width';
 

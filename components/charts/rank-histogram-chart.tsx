@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -8,6 +7,7 @@ import { binomialBand } from './binomial-band';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import type { Box } from './map-contours';
+import { scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 

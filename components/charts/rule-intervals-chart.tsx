@@ -1,11 +1,11 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatInterval, formatLimit, type RateQuantity, rateUnit } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
+import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';

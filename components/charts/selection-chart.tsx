@@ -1,11 +1,11 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
+import { scaleLinear } from './scales';
 import { linearTicks, logTicks, type Tick } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,5 +1,5 @@
-import { scaleLinear, scaleLog } from 'd3';
 import { areaPath, linePath } from './paths';
+import { scaleLinear, scaleLog } from './scales';
 
 interface SparklineProps {
   xs: Float64Array;

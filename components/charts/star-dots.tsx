@@ -1,11 +1,11 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useMemo, useState } from 'react';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import type { DataTable } from './data-table';
+import { scaleLinear } from './scales';
 import { seriesColour } from './series';
 import { type Lasso, StarLasso } from './star-lasso';
 import { linearTicks, withUnit } from './ticks';

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { useMemo, useState } from 'react';
 import {
   formatLimit,
@@ -21,6 +20,7 @@ import {
 } from './influence-panels';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
+import { scaleLinear } from './scales';
 import { seriesColour } from './series';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';

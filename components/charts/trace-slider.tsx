@@ -1,12 +1,12 @@
 'use client';
 
-import { scaleLinear } from 'd3';
 import { type KeyboardEvent, type ReactNode, useId, useRef, useState } from 'react';
 import { HelpMark } from '@/components/help/help-mark';
 import type { HelpWord } from '@/lib/help';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { areaPath, linePath, valueAt } from './paths';
+import { scaleLinear } from './scales';
 import { evenTicks } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,6 +1,5 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { useState } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
@@ -8,6 +7,7 @@ import { ChartFigure, type ChartTable } from './chart-figure';
 import { PointReadout } from './chart-readout';
 import type { DataTable } from './data-table';
 import { linePath } from './paths';
+import { scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks } from './ticks';
 import { useWidth } from './use-width';
 

@@ -1,4 +1,5 @@
-import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
+import { recipeOfRun } from '@/components/runs/run-recipe';
+import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SideAddress } from './address';
@@ -15,8 +16,8 @@ export interface CompareSide {
 /** A side with everything that is compared; undefined where it has no finished run. */
 export function comparedRun(side: CompareSide): Omit<ComparedRun, 'letter'> | undefined {
   const { address, analysis, run, population } = side;
-  const recipe = analysisRecipeSchema.safeParse(run?.recipe);
-  if (!analysis || !run?.inputs || !run.result || !population || !recipe.success) return undefined;
+  const recipe = recipeOfRun(run);
+  if (!analysis || !run?.inputs || !run.result || !population || !recipe) return undefined;
   const name = `${address.key}${address.run === undefined ? '' : `, run ${address.run}`}`;
   return {
     address,
@@ -25,7 +26,7 @@ export function comparedRun(side: CompareSide): Omit<ComparedRun, 'letter'> | un
     run,
     inputs: run.inputs,
     result: address.isZero ? withoutDetections(run.result) : run.result,
-    recipe: address.isZero ? { ...recipe.data, detections: 'none' } : recipe.data,
+    recipe: address.isZero ? { ...recipe, detections: 'none' } : recipe,
     definition: population.definition,
   };
 }

@@ -1,10 +1,10 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { BottomAxis, LeftAxis } from '@/components/charts/axes';
 import { BoundFlag } from '@/components/charts/bound-flag';
 import { ChartFigure, type ChartTable } from '@/components/charts/chart-figure';
 import { areaPath, linePath } from '@/components/charts/paths';
+import { scaleLinear, scaleLog } from '@/components/charts/scales';
 import type { Tick } from '@/components/charts/ticks';
 import type { HelpAxis, HelpCurve, HelpDrawing } from '@/lib/help';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';

@@ -38,10 +38,12 @@ import { mapViewSchema } from '@/lib/schemas/sensitivity';
 import { settingsSchema } from '@/lib/schemas/settings';
 import { shareSchema, sharesSchema } from '@/lib/schemas/sharing';
 import {
+  adoptionPreviewSchema,
   overlapsSchema,
   proposedSchema,
   starListSchema,
   starPageSchema,
+  valueTablesSchema,
 } from '@/lib/schemas/stars';
 import { studySchema, studySummarySchema } from '@/lib/schemas/studies';
 import {
@@ -56,6 +58,7 @@ import { dependentsSchema, uploadSchema } from '@/lib/schemas/uploads';
 
 export {
   activityPageSchema,
+  adoptionPreviewSchema,
   analysisSchema,
   bundleImportSchema,
   candidateDetailSchema,
@@ -113,6 +116,7 @@ export {
   targetSchema,
   tokenSchema,
   uploadSchema,
+  valueTablesSchema,
 };
 
 export const analysisAnswerSchema = z.object({ analysis: z.string() });

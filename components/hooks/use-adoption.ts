@@ -1,17 +1,15 @@
 'use client';
 
 import useSWR from 'swr';
-import {
-  type AdoptedQuantity,
-  type AdoptionChoices,
-  type AdoptionPreview,
-  type AdoptMany,
-  adoptionPreviewSchema,
-  type StarList,
-  starListSchema,
-  type ValueTableView,
-  valueTablesSchema,
+import type {
+  AdoptedQuantity,
+  AdoptionChoices,
+  AdoptionPreview,
+  AdoptMany,
+  StarList,
+  ValueTableView,
 } from '@/lib/schemas/stars';
+import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { request } from './request';
 
@@ -20,7 +18,7 @@ export function useConflicts(collaboration: string, quantity: AdoptedQuantity, f
   const query = { only: `${quantity}-conflict`, offset: 0, limit: 100 };
   return useSWR(
     withQuery(apiPath(collaboration, 'stars'), query),
-    (path) => request(path, starListSchema),
+    (path) => request(path, answer('starListSchema')),
     { fallbackData: fallback, revalidateOnFocus: false },
   );
 }
@@ -31,7 +29,7 @@ export async function adoptValues(
   body: AdoptMany,
 ): Promise<ValueTableView[]> {
   const path = apiPath(collaboration, 'value-tables');
-  return (await request(path, valueTablesSchema, { method: 'POST', body })).tables;
+  return (await request(path, answer('valueTablesSchema'), { method: 'POST', body })).tables;
 }
 
 /** How the limit of the lead analysis would move; nothing is stored. */
@@ -40,5 +38,5 @@ export function previewAdoption(
   body: AdoptionChoices,
 ): Promise<AdoptionPreview> {
   const path = apiPath(collaboration, 'value-tables', 'preview');
-  return request(path, adoptionPreviewSchema, { method: 'POST', body });
+  return request(path, answer('adoptionPreviewSchema'), { method: 'POST', body });
 }

@@ -1,6 +1,7 @@
 import type { Query } from '@/components/runs/live-setting';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
+import type { AskedSetting } from './asked-setting';
 
 export interface PopulationBuilderProps {
   collaboration: string;
@@ -12,4 +13,6 @@ export interface PopulationBuilderProps {
   previewRun: RunView | null;
   canShare: boolean;
   query: Query;
+  /** What the address asks for. */
+  asked: AskedSetting;
 }

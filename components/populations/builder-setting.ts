@@ -1,8 +1,7 @@
-import { priorFromText, priorToText, type Query } from '@/components/runs/live-setting';
+import { priorToText } from '@/components/runs/live-setting';
 import type { RatePrior } from '@/lib/inference';
 import type { AxisConvention, MassConvention } from '@/lib/population';
-import { axisConventionSchema, indexConventionSchema } from '@/lib/schemas/populations';
-import { lawFromQuery, lawToQuery } from './law-address';
+import { lawToQuery } from './law-address';
 import type { LawDefinition } from './law-parts';
 
 /** What indices are stated per on the screen; stored they are per natural logarithm. */
@@ -51,15 +50,6 @@ export function defaultSetting(definition: LawDefinition): BuilderSetting {
   };
 }
 
-export function previewFromQuery<S extends PreviewSetting>(query: Query, saved: S): S {
-  const stated = Number(query.f);
-  return {
-    ...saved,
-    prior: priorFromText(query.prior) ?? saved.prior,
-    statedFraction: stated > 0 && stated <= 1 ? stated : saved.statedFraction,
-  };
-}
-
 export function previewToQuery(
   setting: PreviewSetting,
   saved: PreviewSetting,
@@ -70,19 +60,6 @@ export function previewToQuery(
   }
   if (setting.statedFraction !== saved.statedFraction) query.f = String(setting.statedFraction);
   return query;
-}
-
-export function builderFromQuery(query: Query, saved: BuilderSetting): BuilderSetting {
-  const mass = indexConventionSchema.safeParse(query.convention);
-  const axis = axisConventionSchema.safeParse(query.axisConvention ?? query.convention);
-  return {
-    ...previewFromQuery(query, saved),
-    definition: lawFromQuery(query, saved.definition),
-    conventions: {
-      mass: mass.success ? mass.data : saved.conventions.mass,
-      semiMajorAxis: axis.success ? axis.data : saved.conventions.semiMajorAxis,
-    },
-  };
 }
 
 export function builderToQuery(

@@ -14,12 +14,7 @@ import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
 import { BuilderControls } from './builder-controls';
 import type { PopulationBuilderProps } from './builder-props';
-import {
-  type BuilderSetting,
-  builderFromQuery,
-  builderToQuery,
-  defaultSetting,
-} from './builder-setting';
+import { type BuilderSetting, builderToQuery, defaultSetting } from './builder-setting';
 import { InWords } from './in-words';
 import { faultOf, isSameLaw, type LawDefinition } from './law-parts';
 import { hasIndexPlane } from './limit-plane';
@@ -44,7 +39,7 @@ const noGrid = DEFAULT_GRID();
 export function LawBuilder(props: LawBuilderProps) {
   const { collaboration, versions, version, previewRun, canShare, query, start, choice } = props;
   const saved = useMemo(() => defaultSetting(start), [start]);
-  const [setting, setSetting] = useState(() => builderFromQuery(query, saved));
+  const [setting, setSetting] = useState(props.asked.laws ?? saved);
   const [settled, setSettled] = useState(setting);
   const change = (next: BuilderSetting, isSettled: boolean) => {
     setSetting(next);

@@ -67,7 +67,7 @@ export function PopulationAlone({
         </Notice>
       </div>
       <ChartFigure
-      name="populations"
+        name="populations"
         label={`${shown} planets of the population: ${formatRange(range.massMinMjup, range.massMaxMjup, 'Jupiter masses')} at ${formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}`}
         width={width}
         height={height}

@@ -1,9 +1,9 @@
 'use client';
 
-import { scaleLinear, scaleLog } from 'd3';
 import { type ReactNode, useId, useRef } from 'react';
 import { BottomAxis } from '@/components/charts/axes';
 import { areaPath, linePath } from '@/components/charts/paths';
+import { scaleLinear, scaleLog } from '@/components/charts/scales';
 import { logTicks } from '@/components/charts/ticks';
 import { useWidth } from '@/components/charts/use-width';
 import { type AxisShape, axisLaw } from '@/lib/population';

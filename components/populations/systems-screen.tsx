@@ -14,7 +14,8 @@ import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
-import { FIRST_PREVIEW, previewFromQuery, previewToQuery } from './builder-setting';
+import type { AskedSetting } from './asked-setting';
+import { FIRST_PREVIEW, previewToQuery } from './builder-setting';
 import { CopyWords, OnGrid } from './in-words';
 import { orbitWords } from './orbit-words';
 import { PopulationAlone } from './population-alone';
@@ -32,6 +33,8 @@ interface SystemsScreenProps {
   summary: SystemsSummary;
   previewRun: RunView | null;
   query: Query;
+  /** What the address asks for. */
+  asked: AskedSetting;
 }
 
 const noGrid = DEFAULT_GRID();
@@ -42,7 +45,7 @@ export function SystemsScreen(props: SystemsScreenProps) {
   const { collaboration, versions, version, summary, previewRun, query } = props;
   const { definition, fault } = useWholeDefinition(collaboration, version);
   const { preview, reason, isFetchingMasses } = usePreview(collaboration, previewRun, false);
-  const [setting, setSetting] = useState(() => previewFromQuery(query, FIRST_PREVIEW));
+  const [setting, setSetting] = useState(props.asked.preview);
   useAddressQuery({
     ...(query.version === undefined ? {} : { version: query.version }),
     ...previewToQuery(setting, FIRST_PREVIEW),

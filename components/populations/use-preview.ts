@@ -3,13 +3,13 @@
 import { useMemo } from 'react';
 import useSWR from 'swr';
 import type { MapData } from '@/components/charts/map-contours';
+import { answer } from '@/components/hooks/answer';
 import { apiPath, withQuery } from '@/components/hooks/api-path';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { request } from '@/components/hooks/request';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { type LiveSample, sampleOf } from '@/components/runs/live-sample';
 import type { RunView } from '@/lib/schemas/runs';
-import { targetListSchema } from '@/lib/schemas/surveys';
 
 export interface Preview {
   sample: LiveSample;
@@ -77,7 +77,10 @@ function useHostMasses(collaboration: string, run: RunView | null, isNeeded: boo
       for (const slug of slugs) {
         const path = apiPath(collaboration, 'surveys', slug, 'targets');
         for (let offset = 0, total = 1; offset < total; ) {
-          const page = await request(withQuery(path, { limit: 500, offset }), targetListSchema);
+          const page = await request(
+            withQuery(path, { limit: 500, offset }),
+            answer('targetListSchema'),
+          );
           for (const { starId, hostMassMsun } of page.targets) {
             if (hostMassMsun !== null && !masses.has(starId)) masses.set(starId, hostMassMsun);
           }

@@ -1,10 +1,11 @@
 'use client';
 
 import useSWR from 'swr';
+import { answer } from '@/components/hooks/answer';
 import { apiPath, withQuery } from '@/components/hooks/api-path';
 import { request } from '@/components/hooks/request';
 import type { Population } from '@/lib/population';
-import { type ListedPopulation, populationSchema } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 
 /** The definition of a version; lists hold tabulated systems as a summary, so they are fetched. */
 export function useWholeDefinition(
@@ -16,7 +17,7 @@ export function useWholeDefinition(
     listed && isSystems
       ? withQuery(apiPath(collaboration, 'populations', listed.key), { version: listed.version })
       : null,
-    async (path: string) => (await request(path, populationSchema)).definition,
+    async (path: string) => (await request(path, answer('populationSchema'))).definition,
     { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnReconnect: false },
   );
   const own = listed?.definition;

@@ -1,7 +1,7 @@
 import { fitLikelihood } from '@/components/analyses/prior-choice';
 import type { RatePrior, RateQuantity } from '@/lib/inference';
-import { fromLogIndex, toLogIndex } from '@/lib/population';
-import { type AnalysisRecipe, analysisRecipeSchema, ratePriorSchema } from '@/lib/schemas/analyses';
+import { fromLogIndex } from '@/lib/population';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 
 /** Everything that follows a control at once, without a run. */
@@ -125,72 +125,10 @@ export function definitionToQuery(
   return query;
 }
 
-/** Reads a setting from an address; a part that cannot be read keeps the saved value. */
-export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting {
-  const level = Number(query.level);
-  const asked =
-    query.likelihood === 'mean-number' || query.likelihood === 'host-fraction'
-      ? withLikelihood(saved, query.likelihood, saved)
-      : saved;
-  const candidates = candidatesFromText(query.cand, saved.candidates);
-  const { candidates: _saved, ...rest } = asked;
-  return {
-    ...rest,
-    ...(candidates && { candidates }),
-    definition: definitionFromQuery(query, saved.definition),
-    credibleLevel: level > 0 && level < 1 ? level : saved.credibleLevel,
-    detections: query.det === 'none' || query.det === 'counted' ? query.det : saved.detections,
-    prior: priorFromText(query.prior) ?? asked.prior,
-  };
-}
-
-export function definitionFromQuery(query: Query, saved: PowerLawDefinition): PowerLawDefinition {
-  const mass = readRange(query.mass);
-  const axis = readRange(query.axis);
-  const alpha = readIndex(query.alpha);
-  const beta = readIndex(query.beta);
-  return {
-    ...saved,
-    massMinMjup: mass?.[0] ?? saved.massMinMjup,
-    massMaxMjup: mass?.[1] ?? saved.massMaxMjup,
-    semiMajorAxisMinAu: axis?.[0] ?? saved.semiMajorAxisMinAu,
-    semiMajorAxisMaxAu: axis?.[1] ?? saved.semiMajorAxisMaxAu,
-    massIndex: alpha ?? saved.massIndex,
-    semiMajorAxisIndex: beta ?? saved.semiMajorAxisIndex,
-  };
-}
-
-function readRange(text: string | undefined): [number, number] | undefined {
-  const [min, max] = (text ?? '').split('-').map(Number);
-  return min > 0 && max > min && Number.isFinite(max) ? [min, max] : undefined;
-}
-
-/** The address carries the linear index, as the screen does. */
-function readIndex(text: string | undefined): number | undefined {
-  if (text === undefined || text.trim() === '') return undefined;
-  const index = tidy(toLogIndex(Number(text), 'linear'), 9);
-  return Math.abs(index) <= 10 ? index : undefined;
-}
-
 /** "none", "fixed", "rate:0.2": what is done with candidates without an answer. */
 function candidatesToText(candidates: LiveSetting['candidates']): string {
   if (candidates === undefined) return 'none';
   return candidates.treatment === 'fixed' ? 'fixed' : `rate:${candidates.referenceRate}`;
-}
-
-const candidatesSchema = analysisRecipeSchema.shape.candidates;
-
-function candidatesFromText(
-  text: string | undefined,
-  saved: LiveSetting['candidates'],
-): LiveSetting['candidates'] {
-  if (text === 'none') return undefined;
-  const asked =
-    text === 'fixed'
-      ? { treatment: 'fixed' }
-      : { treatment: 'rate-dependent', referenceRate: Number(text?.replace('rate:', '')) };
-  const parsed = candidatesSchema.safeParse(asked);
-  return parsed.success ? parsed.data : saved;
 }
 
 /** "uniform:1", "log-uniform:0.001:1", "beta:0.5:0.5": the law, then its numbers. */
@@ -210,19 +148,4 @@ export function priorToText(prior: RatePrior): string {
       // Too long for an address: whoever opens it gets the run's own prior.
       return `tabulated:${prior.source ?? prior.value.length}`;
   }
-}
-
-export function priorFromText(text: string | undefined): RatePrior | undefined {
-  if (text === undefined) return undefined;
-  const [law, ...rest] = text.split(':');
-  const [first, second] = rest.map(Number);
-  const candidates: Record<string, unknown> = {
-    uniform: { law, max: first },
-    'log-uniform': { law, min: first, max: second },
-    jeffreys: rest.length === 0 ? { law } : { law, max: first },
-    gamma: { law, shape: first, rate: second },
-    beta: { law, a: first, b: second },
-  };
-  const parsed = ratePriorSchema.safeParse(candidates[law]);
-  return parsed.success ? parsed.data : undefined;
 }

@@ -9,22 +9,17 @@ import { WithdrawnNotices } from '@/components/sharing/withdrawn-notice';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
-import { type AnalysisView, analysisRecipeSchema } from '@/lib/schemas/analyses';
+import type { AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
-import {
-  isSameSetting,
-  type LiveSetting,
-  type Query,
-  settingFromQuery,
-  settingOfRecipe,
-  settingToQuery,
-} from './live-setting';
+import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
 import { NoRunPlate } from './no-run-plate';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
 import { RunEnded, RunProgress } from './run-progress';
+import { recipeOfRun } from './run-recipe';
+import { isFinished, isOnItsWay } from './run-standing';
 import { StoredResult } from './stored-result';
 
 interface ResultScreenProps {
@@ -34,15 +29,8 @@ interface ResultScreenProps {
   run: RunView | null;
   /** The population that this run used. */
   runPopulation: ListedPopulation | null;
-  query: Query;
-}
-
-export function isFinished(run: RunSummary): boolean {
-  return run.job.status === 'done' && run.limit !== null;
-}
-
-export function isOnItsWay(run: RunSummary | undefined): run is RunSummary {
-  return run?.job.status === 'waiting' || run?.job.status === 'running';
+  /** What the address asks for; undefined where the population has no live controls. */
+  asked: LiveSetting | undefined;
 }
 
 /** An analysis: its newest result, and where its laws allow it, live under the controls. */
@@ -75,7 +63,7 @@ export function ResultScreen(props: ResultScreenProps) {
 
 /** The result under controls that it follows at once, and what becomes of a change. */
 function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) {
-  const { collaboration, query, planned } = props;
+  const { collaboration, asked, planned } = props;
   const { data: analysis = props.analysis, mutate } = useAnalysis(
     collaboration,
     props.analysis.key,
@@ -90,10 +78,9 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
     () => settingOfRecipe(analysis.recipe, planned),
     [analysis.recipe, planned],
   );
-  const [moved, setMoved] = useState<LiveSetting | undefined>(() => {
-    const asked = settingFromQuery(query, inRecipe);
-    return isSameSetting(asked, inRecipe) ? undefined : asked;
-  });
+  const [moved, setMoved] = useState<LiveSetting | undefined>(() =>
+    asked && isSameSetting(asked, inRecipe) ? undefined : asked,
+  );
   const setting = moved ?? inRecipe;
   const isUnsaved = moved !== undefined && !isSameSetting(moved, inRecipe);
   useAddressQuery(settingToQuery(setting, inRecipe));
@@ -230,16 +217,16 @@ function useRunDefinition(
 }
 
 function settingOfRun(run: RunView, definition: PowerLawDefinition): LiveSetting | undefined {
-  const recipe = analysisRecipeSchema.safeParse(run.recipe);
-  return recipe.success ? settingOfRecipe(recipe.data, definition) : undefined;
+  const recipe = recipeOfRun(run);
+  return recipe && settingOfRecipe(recipe, definition);
 }
 
 /** Whether the recipe differs from the run in nothing that needs new maps. */
 function needsOnlyLive(analysis: AnalysisView, run: RunView | null): boolean {
-  const recipe = analysisRecipeSchema.safeParse(run?.recipe);
-  if (!recipe.success) return false;
+  const recipe = recipeOfRun(run);
+  if (!recipe) return false;
   return (
-    recipe.data.combination === analysis.recipe.combination &&
-    [...recipe.data.surveyIds].sort().join() === [...analysis.recipe.surveyIds].sort().join()
+    recipe.combination === analysis.recipe.combination &&
+    [...recipe.surveyIds].sort().join() === [...analysis.recipe.surveyIds].sort().join()
   );
 }

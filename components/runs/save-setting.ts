@@ -1,11 +1,7 @@
 import { copyAnalysis, updateAnalysis } from '@/components/hooks/use-analyses';
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { startRun } from '@/components/hooks/use-runs';
-import {
-  type AnalysisRecipe,
-  type AnalysisView,
-  analysisRecipeSchema,
-} from '@/lib/schemas/analyses';
+import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import { isSameDefinition, type LiveSetting } from './live-setting';
@@ -29,6 +25,7 @@ export async function saveAndRun(
     isPlainPowerLaw(before) && isSameDefinition(definition, before)
       ? analysis.population
       : await storePopulation(collaboration, analysis.population, setting);
+  const { analysisRecipeSchema } = await import('@/lib/schemas/analyses');
   await updateAnalysis(collaboration, analysis.key, {
     recipe: analysisRecipeSchema.parse({
       ...withoutOptions(analysis.recipe),

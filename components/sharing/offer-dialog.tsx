@@ -9,7 +9,7 @@ import { Notice } from '@/components/ui/notice';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import { type ShareScope, shareScopeSchema } from '@/lib/schemas/sharing';
+import type { ShareScope } from '@/lib/schemas/sharing';
 
 const goesAlong: Record<ShareScope, string> = {
   whole:
@@ -86,7 +86,7 @@ export function OfferDialog({ collaboration, survey, onClose, onOffered }: Offer
             { value: 'whole', label: 'The whole survey' },
             { value: 'maps', label: 'Its maps only' },
           ]}
-          onChange={(event) => setScope(shareScopeSchema.parse(event.target.value))}
+          onChange={(event) => setScope(event.target.value === 'maps' ? 'maps' : 'whole')}
         />
         <TextField
           label="Attribution"

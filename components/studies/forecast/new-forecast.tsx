@@ -1,12 +1,13 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import { askStudy } from '@/components/hooks/use-studies';
-import { isFinished } from '@/components/runs/result-screen';
+import { isFinished } from '@/components/runs/run-standing';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -17,7 +18,15 @@ import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
 import { askedRun } from '../answered-run';
-import { ForecastForm } from './forecast-form';
+
+/** Drawn once the run is here, and loaded while it comes. */
+const ForecastForm = dynamic(async () => (await import('./forecast-form')).ForecastForm, {
+  loading: () => (
+    <p className="rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
+      Opening the settings
+    </p>
+  ),
+});
 
 interface NewForecastProps {
   collaboration: string;

@@ -3,9 +3,9 @@
 import { useMemo } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useCoolingTables } from '@/components/hooks/use-surveys';
+import { recipeOfRun } from '@/components/runs/run-recipe';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { SelectField } from '@/components/ui/select-field';
-import { analysisRecipeSchema } from '@/lib/schemas/analyses';
 import { systematicsSettingsSchema } from '@/lib/schemas/study-settings';
 import type { FormProps } from '../kind-entry';
 import { SettingsFrame } from '../settings-frame';
@@ -19,11 +19,10 @@ export function SystematicsForm(props: FormProps<'systematics'>) {
   const { data: tables, error } = useCoolingTables(asked.collaboration);
   const { stars } = asked.inputs;
   const groups = useMemo(() => {
-    const recipe = analysisRecipeSchema.safeParse(asked.run.recipe);
     return changesOffered({
       tables: tables ?? [],
       hasSharedStars: stars.some(({ surveys }) => surveys.length > 1),
-      ruleInRun: recipe.success ? recipe.data.combination : undefined,
+      ruleInRun: recipeOfRun(asked.run)?.combination,
       also: start?.changes ?? [],
     });
   }, [tables, stars, asked, start]);

@@ -1,9 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import {
-  builderFromQuery,
-  builderToQuery,
-  defaultSetting,
-} from '@/components/populations/builder-setting';
+import { builderFromQuery } from '@/components/populations/asked-setting';
+import { builderToQuery, defaultSetting } from '@/components/populations/builder-setting';
 import {
   definitionOf,
   isSameLaw,

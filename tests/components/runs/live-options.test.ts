@@ -1,10 +1,10 @@
 import { describe, expect, it } from 'vitest';
 import { consequencesOf } from '@/components/runs/consequences';
+import { settingFromQuery } from '@/components/runs/live-address';
 import { liveAnswer } from '@/components/runs/live-answer';
 import {
   isSameSetting,
   type LiveSetting,
-  settingFromQuery,
   settingToQuery,
   withLikelihood,
 } from '@/components/runs/live-setting';

@@ -1,10 +1,9 @@
 import { describe, expect, it } from 'vitest';
+import { priorFromText, settingFromQuery } from '@/components/runs/live-address';
 import {
   isSameSetting,
   type LiveSetting,
-  priorFromText,
   priorToText,
-  settingFromQuery,
   settingToQuery,
 } from '@/components/runs/live-setting';
 import type { RatePriorInput } from '@/lib/schemas/analyses';

@@ -3,9 +3,12 @@ import { notFound } from 'next/navigation';
 import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
+import { settingFromQuery } from '@/components/runs/live-address';
+import { settingOfRecipe } from '@/components/runs/live-setting';
 import { ResultScreen } from '@/components/runs/result-screen';
 import type { Actor } from '@/lib/access/actor';
 import { NotFound } from '@/lib/errors';
+import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import { getAnalysis } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
 import { getRun } from '@/lib/services/runs';
@@ -26,6 +29,10 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
   const finished = analysis.runs.find(isFinished);
   const run = finished ? await getRun(actor, finished.id) : null;
   const used = run?.inputs?.population.id;
+  const { definition } = analysis.population;
+  const asked = isPlainPowerLaw(definition)
+    ? settingFromQuery(await searchParams, settingOfRecipe(analysis.recipe, definition))
+    : undefined;
   const populations = used ? await findPopulationsById(actor, [used]) : undefined;
   return (
     <>
@@ -35,7 +42,7 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
         analysis={analysis}
         run={run}
         runPopulation={(used && populations?.get(used)) || null}
-        query={await searchParams}
+        asked={asked}
       />
       <NotesOf actor={actor} on={{ kind: 'analysis', key: analysis.key }} />
     </>

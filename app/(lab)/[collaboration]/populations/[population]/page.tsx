@@ -2,6 +2,7 @@ import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { newestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
+import { askedSetting } from '@/components/populations/asked-setting';
 import { PopulationBuilder } from '@/components/populations/population-builder';
 import { may } from '@/lib/access/permissions';
 import { listPopulations } from '@/lib/services/populations';
@@ -38,6 +39,7 @@ export default async function PopulationPage({ params, searchParams }: PageProps
       previewRun={run}
       canShare={may(actor, 'share-population')}
       query={query}
+      asked={askedSetting(query, version)}
     />
   );
 }

@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import { newestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
+import { askedSetting } from '@/components/populations/asked-setting';
 import { PopulationBuilder } from '@/components/populations/population-builder';
 import { may } from '@/lib/access/permissions';
 
@@ -14,13 +15,15 @@ export default async function NewPopulationPage({
   searchParams: Promise<Record<string, string | undefined>>;
 }) {
   const actor = await currentActor((await params).collaboration);
+  const query = await searchParams;
   return (
     <PopulationBuilder
       collaboration={actor.collaboration}
       versions={[]}
       previewRun={await newestRun(actor)}
       canShare={may(actor, 'share-population')}
-      query={await searchParams}
+      query={query}
+      asked={askedSetting(query, undefined)}
     />
   );
 }
