@@ -19,6 +19,8 @@ export function changePassword(currentPassword: string, newPassword: string) {
   });
 }
 
+export const unlinkOrcid = () => requestNothing('/api/v1/me/orcid', { method: 'DELETE' });
+
 export function useSessions(fallback: SessionView[]) {
   return useSWR(
     SESSIONS,

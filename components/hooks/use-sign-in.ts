@@ -13,6 +13,26 @@ export async function startSession(email: string, password: string): Promise<str
   return reply?.error ?? 'No answer from the server; try again.';
 }
 
+/** The same by a link that came by mail. */
+export async function startSessionByLink(code: string): Promise<string | null> {
+  const { signIn } = await import('next-auth/react');
+  const reply = await signIn('link', { code, redirect: false });
+  if (reply?.ok && !reply.error) return null;
+  return reply?.error ?? 'No answer from the server; try again.';
+}
+
+/**
+ * Leaves for ORCID: to sign in, or to link the iD to the account that is signed in. What becomes of it
+ * stands in the address of the page that the browser comes back to.
+ */
+export async function leaveForOrcid(
+  intent: 'orcid' | 'orcid-link',
+  page: string,
+): Promise<unknown> {
+  const { signIn } = await import('next-auth/react');
+  return signIn(intent, { callbackUrl: page });
+}
+
 /** Ends this session on the server as well as here. */
 export async function endSession(): Promise<unknown> {
   const { signOut } = await import('next-auth/react');

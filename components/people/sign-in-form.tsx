@@ -1,7 +1,7 @@
 'use client';
 
 import Link from 'next/link';
-import { startSession } from '@/components/hooks/use-sign-in';
+import { leaveForOrcid, startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
@@ -11,7 +11,7 @@ import { TextField } from '@/components/ui/text-field';
 const loadSchema = async () => (await import('@/lib/schemas/people')).signInSchema;
 
 /** E-mail and password; on success the browser goes to `next`, an address of this site. */
-export function SignInForm({ next }: { next: string }) {
+export function SignInForm({ next, hasOrcid }: { next: string; hasOrcid: boolean }) {
   const { field, submit, refusal, setRefusal, isBusy } = useSchemaForm(loadSchema, {
     email: '',
     password: '',
@@ -37,9 +37,17 @@ export function SignInForm({ next }: { next: string }) {
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Sign in
       </Button>
+      {hasOrcid && (
+        <Button type="button" isWide onClick={() => void leaveForOrcid('orcid', next)}>
+          Sign in with ORCID
+        </Button>
+      )}
       <p className="flex flex-wrap gap-x-5 gap-y-1 text-[14px] text-ink3">
         <Link className="underline underline-offset-3" href="/reset">
           Forgotten the password?
+        </Link>
+        <Link className="underline underline-offset-3" href="/sign-in/link">
+          Sign in by a link in your mail
         </Link>
       </p>
       <p className="text-[14px] text-ink3">

@@ -1,9 +1,10 @@
+import { randomBytes } from 'node:crypto';
 import { existsSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { LauncherProblem, root } from './environment.mjs';
 import { findFreePort } from './ports.mjs';
 import { run } from './process-run.mjs';
-import { mailboxService, webService, workerService } from './services.mjs';
+import { mailboxService, orcidService, webService, workerService } from './services.mjs';
 
 /**
  * Where one running product lives; `npm start` and the browser tests each have their own.
@@ -16,6 +17,7 @@ import { mailboxService, webService, workerService } from './services.mjs';
  * @property {number} port
  * @property {string} address
  * @property {{ mailUrl: string, mailboxUrl?: string, smtpPort?: number }} mail
+ * @property {Record<string, string>} [orcidStandIn] what web server and stand-in are told of each other
  * @property {Record<string, string>} secrets
  * @property {boolean} isDevelopment
  */
@@ -32,6 +34,27 @@ export async function chooseMail(/** @type {number} */ webPort, given = process.
   };
 }
 
+/**
+ * Settings of the stand-in for ORCID: only for the demonstration on this machine, and only where no
+ * client of the real one is set up.
+ *
+ * @returns {Promise<Record<string, string> | undefined>}
+ */
+export async function chooseOrcidStandIn(
+  /** @type {number} */ webPort,
+  /** @type {boolean} */ isDemo,
+  /** @type {NodeJS.ProcessEnv} */ given = process.env,
+) {
+  if (!isDemo || given.NEXTAUTH_URL || given.ORCID_CLIENT_ID || given.RAREBOUND_HOST)
+    return undefined;
+  const port = await findFreePort(webPort + 3, [webPort, webPort + 1, webPort + 2]);
+  return {
+    ORCID_ISSUER: `http://127.0.0.1:${port}`,
+    ORCID_CLIENT_ID: 'demonstration',
+    ORCID_CLIENT_SECRET: randomBytes(16).toString('hex'),
+  };
+}
+
 /** @returns {NodeJS.ProcessEnv} what each process of the product is told */
 export function productEnvironment(/** @type {Product} */ product) {
   const { mailUrl, mailboxUrl } = product.mail;
@@ -41,6 +64,7 @@ export function productEnvironment(/** @type {Product} */ product) {
     DATABASE_URL: product.databaseUrl(),
     NEXTAUTH_URL: product.address,
     ...product.secrets,
+    ...product.orcidStandIn,
     MAIL_URL: mailUrl,
     ...(mailboxUrl === undefined ? {} : { MAILBOX_URL: mailboxUrl }),
     RAREBOUND_DATA_DIR: product.folder,
@@ -60,7 +84,7 @@ export async function runScript(/** @type {Product} */ product, /** @type {strin
 }
 
 /**
- * Starts mailbox, worker and web server, and returns when the web server answers.
+ * Starts mailbox, stand-in, worker and web server, and returns when the web server answers.
  *
  * @param {import('./supervisor.mjs').Supervisor} supervisor
  * @param {Product} product
@@ -69,6 +93,9 @@ export async function startProduct(supervisor, product) {
   const environment = () => productEnvironment(product);
   if (product.mail.smtpPort !== undefined) {
     await supervisor.start(mailboxService({ ...product, environment }));
+  }
+  if (product.orcidStandIn !== undefined) {
+    await supervisor.start(orcidService({ ...product, environment }));
   }
   await Promise.all([
     supervisor.start(workerService({ ...product, environment })),

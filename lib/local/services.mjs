@@ -60,6 +60,19 @@ export function mailboxService({ bundleFolder, environment }) {
   };
 }
 
+/** The stand-in for ORCID; it believes everybody, so only the demonstration has one. @returns {Service} */
+export function orcidService({ bundleFolder, environment }) {
+  return {
+    name: 'orcid',
+    command: process.execPath,
+    args: ['--enable-source-maps', path.join(root, bundleFolder, 'lib/local/orcid-stand-in.js')],
+    cwd: root,
+    env: environment,
+    isReady: () => answers(environment().ORCID_ISSUER),
+    stopMs: 3000,
+  };
+}
+
 /** @returns {Service} */
 export function workerService({ bundleFolder, environment }) {
   return {

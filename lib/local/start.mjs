@@ -8,7 +8,13 @@ import { holdExclusively } from './exclusive.mjs';
 import { ensurePackages } from './packages.mjs';
 import { findFreePort, wantedPort } from './ports.mjs';
 import { isAlive, waitUntil } from './process-run.mjs';
-import { chooseMail, readDemoSignIns, runScript, startProduct } from './product.mjs';
+import {
+  chooseMail,
+  chooseOrcidStandIn,
+  readDemoSignIns,
+  runScript,
+  startProduct,
+} from './product.mjs';
 import { readSecrets } from './secrets.mjs';
 import { killGroup } from './service-process.mjs';
 import { databaseService } from './services.mjs';
@@ -62,6 +68,7 @@ async function bringUp(supervisor, state) {
     port,
     address: process.env.NEXTAUTH_URL || `http://127.0.0.1:${port}`,
     mail: await chooseMail(port),
+    orcidStandIn: await chooseOrcidStandIn(port, isDemoWanted),
     secrets: readSecrets(folder),
     isDevelopment,
   };

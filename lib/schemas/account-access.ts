@@ -27,6 +27,7 @@ export const accountRoutes: ApiRoute[] = [
   route('post', '/api/v1/account-links', 'open', 'Ask for a link by e-mail: to sign in, or reset', {
     body: askLinkSchema,
   }),
+  route('delete', '/api/v1/me/orcid', 'session', 'Take the ORCID iD off your account'),
   route('post', '/api/v1/password-reset', 'open', 'Set a new password by the link; sessions end', {
     body: resetPasswordSchema,
   }),

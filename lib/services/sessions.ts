@@ -1,80 +1,11 @@
-import { QueryTypes, type Transaction } from 'sequelize';
+import { QueryTypes } from 'sequelize';
 import type { KnownPerson } from '@/lib/access/actor';
-import { attemptKey, countAttempt, forgetAttempts, uncountAttempt } from '@/lib/access/attempts';
-import { isPassword } from '@/lib/access/passwords';
-import { beginSession, endSessions, SESSION_IDLE_DAYS } from '@/lib/access/sessions';
-import { LabError, NotFound } from '@/lib/errors';
+import { endSessions, SESSION_IDLE_DAYS } from '@/lib/access/sessions';
+import { NotFound } from '@/lib/errors';
 import { type SessionView, sessionSchema } from '@/lib/schemas/account';
 import { idSchema } from '@/lib/schemas/common';
-import { signInSchema } from '@/lib/schemas/people';
-import { database, inTransaction, PersonRow } from '@/models';
+import { database, inTransaction } from '@/models';
 import { recordAudit } from './audit';
-
-export interface SignInAttempt {
-  email: string;
-  password: string;
-  /** Where it came from, as far as that can be believed. */
-  address: string;
-  userAgent: string | null;
-}
-
-export interface SignedIn {
-  id: string;
-  name: string;
-  email: string;
-  sessionId: string;
-}
-
-const TOO_MANY = 'Too many wrong passwords.';
-/** One sentence for both, so that it does not tell which accounts exist. */
-const WRONG = 'The address or the password is wrong.';
-
-async function recordSignIn(
-  personId: string,
-  outcome: 'sign-in' | 'sign-in-refused',
-  address: string,
-  transaction: Transaction,
-): Promise<void> {
-  const summary = outcome === 'sign-in' ? 'signed in' : 'was refused at sign-in';
-  const item = { kind: 'person', id: personId };
-  await recordAudit({ personId, via: 'session', address }, outcome, item, summary, transaction);
-}
-
-/**
- * Begins a session for the person whose password this is.
- *
- * Each attempt is counted before the password is looked at, so that attempts sent at once do not
- * slip through; a right password clears the counts. Unknown accounts cost the same hash.
- *
- * @throws TooMany after 5 wrong passwords for an account from one address in 15 minutes
- */
-export async function signIn(attempt: SignInAttempt): Promise<SignedIn> {
-  const { address } = attempt;
-  const given = signInSchema.safeParse({ email: attempt.email, password: attempt.password });
-  const email = given.success ? given.data.email : '';
-  const account = attemptKey(email);
-  await countAttempt('sign-in-account-address', `${account}:${address}`, TOO_MANY);
-  await countAttempt('sign-in-address', address, 'Too many attempts come from here.');
-  await countAttempt('sign-in-account', account, TOO_MANY);
-  database();
-  const person = given.success ? await PersonRow.findOne({ where: { email } }) : null;
-  const isRight = await isPassword(given.data?.password ?? '', person?.passwordHash ?? null);
-  if (!person || !isRight || person.suspendedAt) {
-    if (person) {
-      await inTransaction((t) => recordSignIn(person.id, 'sign-in-refused', address, t));
-    }
-    throw new LabError('sign-in', 401, WRONG);
-  }
-  await forgetAttempts('sign-in-account-address', `${account}:${address}`);
-  await forgetAttempts('sign-in-account', account);
-  await uncountAttempt('sign-in-address', address);
-  const sessionId = await inTransaction(async (transaction) => {
-    const id = await beginSession(person.id, attempt.userAgent, transaction);
-    await recordSignIn(person.id, 'sign-in', address, transaction);
-    return id;
-  });
-  return { id: person.id, name: person.name, email: person.email, sessionId };
-}
 
 /** Ends the session of a cookie; one that has ended already is no fault. */
 export async function signOut(personId: string, sessionId: string): Promise<void> {

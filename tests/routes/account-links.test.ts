@@ -31,11 +31,11 @@ const reset = (code: string, password = NEW_PASSWORD) =>
   call(resetPassword, { method: 'POST', body: { code, password } });
 
 /** Asks for a link and takes its code out of the message that arrives. */
-async function linkFor(email: string): Promise<string> {
-  expect((await ask(email)).status).toBe(204);
+async function linkFor(email: string, purpose = 'password-reset'): Promise<string> {
+  expect((await ask(email, purpose)).status).toBe(204);
   await sendDue();
   const mail = mailbox.received.filter(({ to }) => to.includes(email)).at(-1);
-  const code = /\/reset\/([\w-]+)/.exec(mail?.text ?? '')?.[1];
+  const code = /\/(?:reset|sign-in\/link)\/([\w-]+)/.exec(mail?.text ?? '')?.[1];
   if (!code) throw new Error('no link in the message');
   return code;
 }
@@ -129,5 +129,58 @@ describe('a link to set a new password', () => {
       expect(Number(refused?.headers.get('retry-after'))).toBeGreaterThan(880);
     }
     expect(JSON.stringify(await query('select key from rate_limit'))).not.toContain('stranger');
+  });
+});
+
+describe('a link to sign in', () => {
+  const signInBy = async (code: string) => {
+    const browser = new Browser();
+    return { browser, response: await browser.post('callback/link', { code }) };
+  };
+
+  it('begins one session, once, and does nothing but that', async () => {
+    const person = await createPerson();
+    const code = await linkFor(person.email, 'sign-in');
+    expect((await reset(code)).status).toBe(422);
+    const both = await Promise.all([signInBy(code), signInBy(code)]);
+    expect(both.map(({ response }) => response.status).sort()).toEqual([200, 401]);
+    const winner = both.find(({ response }) => response.status === 200);
+    if (!winner) throw new Error('nobody was signed in');
+    const me = await (await winner.browser.me()).json();
+    expect(me.person).toMatchObject({ id: person.id, email: person.email });
+    const sessions = await query('select 1 from session where person_id = $1', [person.id]);
+    expect(sessions).toHaveLength(1);
+    const [entry] = await query<{ details: object }>(
+      "select details from audit_entry where action = 'sign-in' and person_id = $1",
+      [person.id],
+    );
+    expect(entry.details).toMatchObject({ by: 'link' });
+  });
+
+  it('is over after 15 minutes and after a newer one, for somebody suspended, and by a new password', async () => {
+    const { email, id } = await createPerson();
+    const first = await linkFor(email, 'sign-in');
+    const [row] = await query<{ minutes: number }>(
+      `select extract(epoch from expires_at - created_at)::float / 60 as minutes
+         from account_link where person_id = $1`,
+      [id],
+    );
+    expect(row.minutes).toBeCloseTo(15, 6);
+    const second = await linkFor(email, 'sign-in');
+    expect((await signInBy(first)).response.status).toBe(401);
+    await query('update account_link set expires_at = now() where person_id = $1', [id]);
+    expect((await signInBy(second)).response.status).toBe(401);
+    const third = await linkFor(email, 'sign-in');
+    await reset(await linkFor(email));
+    expect((await signInBy(third)).response.status).toBe(401);
+    await query('delete from rate_limit');
+    const fourth = await linkFor(email, 'sign-in');
+    await query('update person set suspended_at = now() where id = $1', [id]);
+    const refused = await signInBy(fourth);
+    expect(refused.response.status).toBe(401);
+    expect(new URL((await refused.response.json()).url).searchParams.get('error')).toBe(
+      'This link was used, has expired or was replaced by a newer one: ask for another.',
+    );
+    expect((await refused.browser.me()).status).toBe(401);
   });
 });

@@ -28,9 +28,8 @@ export class Browser {
     const request = new Request(`${webAddress()}/api/auth/${action}`, {
       headers: { cookie: this.cookie },
     });
-    return this.keep(
-      await authGet(request, { params: Promise.resolve({ nextauth: action.split('/') }) }),
-    );
+    const nextauth = action.split('?')[0].split('/');
+    return this.keep(await authGet(request, { params: Promise.resolve({ nextauth }) }));
   }
 
   async post(action: string, form: Record<string, string>): Promise<Response> {

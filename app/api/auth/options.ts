@@ -8,14 +8,35 @@ import {
 } from '@/lib/access/sessions';
 import { config } from '@/lib/config';
 import { LabError } from '@/lib/errors';
-import { signIn, signOut } from '@/lib/services/sessions';
+import { signOut } from '@/lib/services/sessions';
+import { type SignedIn, signIn, signInByLink, type Visitor } from '@/lib/services/sign-in';
+
+import { enterByOrcid, linkByOrcid } from './orcid-answer';
+import { orcidProvider } from './orcid-provider';
 
 /** What the answer must still say after next-auth has written it: the refusal of this sign-in. */
 export interface SignInOutcome {
   refusal?: unknown;
+  /** Whom ORCID let in: next-auth itself carries the iD alone. */
+  signedIn?: SignedIn;
 }
 
 const NOT_POSSIBLE = 'Signing in is not possible just now. Try again in a minute.';
+
+/** Runs one attempt; a refusal is kept for the answer, of which next-auth tells the sentence alone. */
+async function attempt(
+  outcome: SignInOutcome,
+  given: Record<string, unknown> | undefined,
+  work: (visitor: Visitor) => Promise<SignedIn>,
+): Promise<SignedIn> {
+  const headers = new Headers(given as Record<string, string> | undefined);
+  try {
+    return await work({ address: addressOf(headers), userAgent: headers.get('user-agent') });
+  } catch (refusal) {
+    outcome.refusal = refusal;
+    throw new Error(refusal instanceof LabError ? refusal.message : NOT_POSSIBLE);
+  }
+}
 
 function cookie(name: string, isSecure: boolean) {
   return {
@@ -24,9 +45,17 @@ function cookie(name: string, isSecure: boolean) {
   };
 }
 
+/** Where next-auth keeps the page to go back to. */
+export const callbackCookieName = () =>
+  `${config().webAddress.startsWith('https://') ? '__Host-' : ''}rarebound.callback`;
+
 /** Made for each request: nothing reads the environment while the module is loaded. */
-export function authOptions(outcome: SignInOutcome): NextAuthOptions {
-  const { authSecret, webAddress } = config();
+export function authOptions(
+  outcome: SignInOutcome,
+  headers: Headers,
+  page: string | undefined,
+): NextAuthOptions {
+  const { authSecret, webAddress, orcid } = config();
   const isSecure = webAddress.startsWith('https://');
   const prefix = isSecure ? '__Host-' : '';
   return {
@@ -35,7 +64,7 @@ export function authOptions(outcome: SignInOutcome): NextAuthOptions {
     session: { strategy: 'jwt', maxAge: SESSION_LONGEST_DAYS * 86_400 },
     cookies: {
       sessionToken: cookie(sessionCookieName(), isSecure),
-      callbackUrl: cookie(`${prefix}rarebound.callback`, isSecure),
+      callbackUrl: cookie(callbackCookieName(), isSecure),
       csrfToken: cookie(`${prefix}rarebound.csrf`, isSecure),
     },
     pages: { signIn: '/sign-in', signOut: '/sign-in', error: '/sign-in' },
@@ -43,24 +72,43 @@ export function authOptions(outcome: SignInOutcome): NextAuthOptions {
       CredentialsProvider({
         id: 'credentials',
         credentials: { email: { type: 'email' }, password: { type: 'password' } },
-        async authorize(credentials, request) {
-          const headers = new Headers(request.headers as Record<string, string> | undefined);
-          try {
-            return await signIn({
-              email: String(credentials?.email ?? ''),
-              password: String(credentials?.password ?? ''),
-              address: addressOf(headers),
-              userAgent: headers.get('user-agent'),
-            });
-          } catch (refusal) {
-            outcome.refusal = refusal;
-            throw new Error(refusal instanceof LabError ? refusal.message : NOT_POSSIBLE);
-          }
-        },
+        authorize: (given, request) =>
+          attempt(outcome, request.headers, (visitor) =>
+            signIn({
+              ...visitor,
+              email: String(given?.email ?? ''),
+              password: String(given?.password ?? ''),
+            }),
+          ),
       }),
+      CredentialsProvider({
+        id: 'link',
+        credentials: { code: { type: 'text' } },
+        authorize: (given, request) =>
+          attempt(outcome, request.headers, (visitor) =>
+            signInByLink({ ...visitor, code: String(given?.code ?? '') }),
+          ),
+      }),
+      ...(orcid === null
+        ? []
+        : [orcidProvider('orcid', orcid), orcidProvider('orcid-link', orcid)]),
     ],
     callbacks: {
-      jwt: ({ token, user }) => (user ? { sub: user.id, sid: user.sessionId } : token),
+      async signIn({ account }) {
+        if (account?.type !== 'oauth') return true;
+        const given = account.providerAccountId;
+        const answer =
+          account.provider === 'orcid-link'
+            ? await linkByOrcid(given, headers, page)
+            : await enterByOrcid(given, headers);
+        if ('goTo' in answer) return answer.goTo;
+        outcome.signedIn = answer.signedIn;
+        return true;
+      },
+      jwt: ({ token, user }) => {
+        const who = outcome.signedIn ?? user;
+        return who ? { sub: who.id, sid: who.sessionId } : token;
+      },
       // A session whose row is gone has ended, whatever the cookie says: next-auth clears it.
       async session({ session, token }) {
         const person = await findPersonOfSession(token);

@@ -2,7 +2,7 @@ import type { NextApiRequest, NextApiResponse } from 'next';
 import NextAuth from 'next-auth';
 import { LabError, TooMany } from '@/lib/errors';
 import { CollectedAnswer } from '../collected-answer';
-import { authOptions, type SignInOutcome } from '../options';
+import { authOptions, callbackCookieName, type SignInOutcome } from '../options';
 
 /** A password, an address and a token or two. */
 const LONGEST_FORM_BYTES = 10_000;
@@ -47,17 +47,18 @@ async function handle(
   if (nextauth[0] === '_log') return new Response(null, { status: 204 });
   const outcome: SignInOutcome = {};
   const answer = new CollectedAnswer();
+  const cookies = cookiesOf(request.headers);
   const asked = {
     method: request.method,
     headers: Object.fromEntries(request.headers),
-    cookies: cookiesOf(request.headers),
+    cookies,
     query: { ...Object.fromEntries(new URL(request.url).searchParams), nextauth },
     body: await formOf(request),
   };
   await NextAuth(
     asked as unknown as NextApiRequest,
     answer as unknown as NextApiResponse,
-    authOptions(outcome),
+    authOptions(outcome, request.headers, cookies[callbackCookieName()]),
   );
   const { refusal } = outcome;
   if (refusal instanceof TooMany) {

@@ -2,6 +2,7 @@ import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
 import { ReleaseForm } from '@/components/releases/release-form';
 import { PageTitle } from '@/components/ui/page-title';
+import { readOwnOrcid } from '@/lib/services/orcid';
 import { listReleases } from '@/lib/services/releases/describe';
 import { listFrozenRuns } from '@/lib/services/releases/frozen-runs';
 
@@ -14,7 +15,11 @@ interface PageProps {
 
 export default async function NewReleasePage({ params, searchParams }: PageProps) {
   const actor = await currentActor((await params).collaboration);
-  const [choices, { releases }] = await Promise.all([listFrozenRuns(actor), listReleases(actor)]);
+  const [choices, { releases }, orcid] = await Promise.all([
+    listFrozenRuns(actor),
+    listReleases(actor),
+    readOwnOrcid(actor),
+  ]);
   const { run } = await searchParams;
   const chosen = choices.find(({ id }) => id === run);
   return (
@@ -30,7 +35,7 @@ export default async function NewReleasePage({ params, searchParams }: PageProps
         published={releases.filter(({ state, replacedBy }) => state === 'published' && !replacedBy)}
         initial={{
           title: chosen?.analysisName ?? '',
-          authors: [{ name: actor.personName }],
+          authors: [{ name: actor.personName, ...(orcid === null ? {} : { orcid }) }],
           abstract: '',
           licence: 'CC-BY-4.0',
           note: '',

@@ -1,0 +1,29 @@
+'use client';
+
+import { type FormEvent, useState } from 'react';
+import { startSessionByLink } from '@/components/hooks/use-sign-in';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+
+/** Asks once, so that a program which follows links in mail uses none of them up. */
+export function LinkSignIn({ code }: { code: string }) {
+  const [refusal, setRefusal] = useState<string | null>(null);
+  const [isBusy, setBusy] = useState(false);
+  const enter = async (event: FormEvent) => {
+    event.preventDefault();
+    setBusy(true);
+    setRefusal(null);
+    const sentence = await startSessionByLink(code);
+    if (sentence === null) return window.location.assign('/');
+    setRefusal(sentence);
+    setBusy(false);
+  };
+  return (
+    <form className="flex flex-col gap-4" onSubmit={(event) => void enter(event)}>
+      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      <Button type="submit" variant="primary" isWide isBusy={isBusy}>
+        Sign in
+      </Button>
+    </form>
+  );
+}
