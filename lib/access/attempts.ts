@@ -69,22 +69,44 @@ export function describeWait(seconds: number): string {
   return `${Math.ceil(seconds / MINUTE_S)} minutes`;
 }
 
+/** What is left of a limit, as the headers of an answer tell it. */
+export interface Budget {
+  name: LimitName;
+  remaining: number;
+  resetS: number;
+}
+
+const secondsUntil = (result: RateLimiterRes) => Math.max(1, Math.ceil(result.msBeforeNext / 1000));
+
 function refuseUntil(result: RateLimiterRes, sentence: string): never {
-  const seconds = Math.max(1, Math.ceil(result.msBeforeNext / 1000));
+  const seconds = secondsUntil(result);
   throw new TooMany(`${sentence} Try again in ${describeWait(seconds)}.`, seconds);
 }
 
 /**
  * Counts one attempt.
  *
+ * @param tell is given what is left, be the attempt taken or refused
  * @throws TooMany with the length of the wait once the attempts are used up
  */
-export async function countAttempt(name: LimitName, key: string, sentence: string): Promise<void> {
+export async function countAttempt(
+  name: LimitName,
+  key: string,
+  sentence: string,
+  tell?: (budget: Budget) => void,
+): Promise<void> {
+  const tellOf = (result: RateLimiterRes) =>
+    tell?.({
+      name,
+      remaining: Math.max(0, result.remainingPoints),
+      resetS: secondsUntil(result),
+    });
   try {
-    await limiter(name).consume(key);
+    tellOf(await limiter(name).consume(key));
   } catch (refusal) {
-    if (refusal instanceof RateLimiterRes) refuseUntil(refusal, sentence);
-    throw refusal;
+    if (!(refusal instanceof RateLimiterRes)) throw refusal;
+    tellOf(refusal);
+    refuseUntil(refusal, sentence);
   }
 }
 

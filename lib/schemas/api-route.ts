@@ -19,6 +19,8 @@ export interface ApiRoute {
   answer?: ZodType;
   /** Content types of an answer that is a file or bytes, besides JSON. */
   files?: readonly string[];
+  /** What it answers is told once: no Idempotency-Key keeps it. */
+  tellsSecret?: boolean;
 }
 
 export const team = '/api/v1/collaborations/{collaboration}';
@@ -34,3 +36,19 @@ export const route = (
   summary: string,
   rest: Rest = {},
 ): ApiRoute => ({ method, path, access, summary, ...rest });
+
+const ofTeam = ({ path }: ApiRoute) => path === team || path.startsWith(`${team}/`);
+
+/** Whether the answer is a list that is read page by page. */
+export const isPaged = ({ query }: ApiRoute): boolean =>
+  query !== undefined && 'cursor' in query.shape && 'offset' in query.shape;
+
+/** Whether the answer to the first of two equal writes is kept for the second. */
+export const takesKey = (one: ApiRoute): boolean =>
+  one.method === 'post' && ofTeam(one) && !one.isUpload && !one.tellsSecret;
+
+/** Whether a write may ask that nothing has changed: where reading the same address gives a tag. */
+export const takesIfMatch = (one: ApiRoute, all: readonly ApiRoute[]): boolean =>
+  (one.method === 'patch' || one.method === 'delete') &&
+  ofTeam(one) &&
+  all.some(({ method, path, answer }) => method === 'get' && path === one.path && answer);

@@ -150,6 +150,7 @@ const people: ApiRoute[] = [
     body: createTokenSchema,
     status: 201,
     answer: newTokenSchema,
+    tellsSecret: true,
   }),
   route('delete', `${team}/tokens/{token}`, 'write', 'Revoke one of your tokens'),
   route('get', `${team}/audit`, 'read', 'Who did what, newest first', {
@@ -334,6 +335,7 @@ const analyses: ApiRoute[] = [
   }),
   route('delete', `${team}/studies/{study}`, 'write', 'Delete a further question and its result'),
   route('get', `${team}/jobs`, 'read', 'Jobs, open ones first', {
+    query: pageSchema,
     answer: listOf('jobs', jobSchema),
   }),
   route('get', `${team}/jobs/{job}`, 'read', 'One job and how far it is', { answer: jobSchema }),

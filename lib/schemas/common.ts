@@ -31,10 +31,17 @@ export const levelSchema = z
   .gt(0, 'more than 0 and less than 1')
   .lt(1, 'more than 0 and less than 1; is this per cent?');
 
-/** Lists are read page by page: at most 500 rows, from an offset. */
+/** From the Link header of the page before; its inside is nobody's business. */
+export const cursorSchema = z
+  .string()
+  .max(60)
+  .regex(/^[A-Za-z0-9_-]+$/, 'the cursor of a Link header');
+
+/** Lists are read page by page: at most 500 rows, from an offset or a cursor. */
 export const pageSchema = z.strictObject({
   limit: z.coerce.number().int().min(1).max(500).default(100),
   offset: z.coerce.number().int().min(0).default(0),
+  cursor: cursorSchema.optional(),
 });
 
 export const moment = z.iso.datetime({ offset: true });

@@ -13,6 +13,7 @@ import { auditEntrySchema } from './audit';
 import { candidateDetailSchema, candidateSchema } from './candidates';
 import { jobSchema } from './jobs';
 import { noteSchema } from './notes';
+import { answerHeadersOf, refusalHeaders, requestHeadersOf } from './openapi-headers';
 import { invitationSchema, memberSchema, meSchema, tokenSchema } from './people';
 import {
   listedPopulationSchema,
@@ -85,6 +86,7 @@ function nameSchemas(): void {
 
 const PROBLEM = {
   description: 'Refused: a problem document after RFC 9457 with the place of each fault',
+  headers: refusalHeaders,
   content: { 'application/problem+json': { schema: problemSchema } },
 };
 
@@ -104,14 +106,16 @@ function parametersOf(path: string) {
   return z.object(Object.fromEntries(names.map((name) => [name, z.string()])));
 }
 
-function responsesOf({ answer, files, status }: ApiRoute): RouteConfig['responses'] {
+function responsesOf(one: ApiRoute): RouteConfig['responses'] {
+  const { answer, files, status } = one;
+  const headers = answerHeadersOf(one);
   if (!answer && !files) {
-    return { 204: { description: 'Done; nothing to tell' }, default: PROBLEM };
+    return { 204: { description: 'Done; nothing to tell', headers }, default: PROBLEM };
   }
   const json = answer ? { 'application/json': { schema: answer } } : {};
   const others = (files ?? []).map((type) => [type, { schema: FILE }]);
   const content = { ...json, ...Object.fromEntries(others) };
-  return { [status ?? 200]: { description: 'Done', content }, default: PROBLEM };
+  return { [status ?? 200]: { description: 'Done', headers, content }, default: PROBLEM };
 }
 
 function bodyOf({ body, isUpload, uploadType = 'application/octet-stream' }: ApiRoute) {
@@ -169,7 +173,12 @@ export function buildOpenApi(serverAddress: string): OpenApiDocument {
       operationId: operationIdOf(route),
       summary: route.summary,
       security: security[route.access],
-      request: { params: parametersOf(route.path), query: route.query, body: bodyOf(route) },
+      request: {
+        params: parametersOf(route.path),
+        query: route.query,
+        headers: requestHeadersOf(route, apiRoutes),
+        body: bodyOf(route),
+      },
       responses: responsesOf(route),
     });
   }

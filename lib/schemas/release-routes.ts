@@ -58,6 +58,7 @@ export const releaseRoutes: readonly ApiRoute[] = [
     answer: listOf('links', guestLinkSchema),
   }),
   route('post', `${team}/guest-links`, 'write', 'Give a guest a link; its address is told once', {
+    tellsSecret: true,
     body: createGuestLinkSchema,
     status: 201,
     answer: newGuestLinkSchema,

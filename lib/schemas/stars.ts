@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { idSchema, lineSchema, moment, positiveSchema } from './common';
+import { idSchema, lineSchema, moment, pageSchema, positiveSchema } from './common';
 import { companionSchema, curveSchema } from './surveys';
 
 const errorSchema = z.number().finite().min(0);
@@ -116,8 +116,7 @@ export const starSchema = z.object({
 export type StarView = z.infer<typeof starSchema>;
 
 export const starQuerySchema = z.strictObject({
-  limit: z.coerce.number().int().min(1).max(500).default(100),
-  offset: z.coerce.number().int().min(0).default(0),
+  ...pageSchema.shape,
   q: z.string().trim().max(100).optional(),
   survey: z.string().max(39).optional(),
   only: z.enum(['shared', 'age-conflict', 'distance-conflict', 'adopted', 'undecided']).optional(),

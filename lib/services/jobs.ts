@@ -93,15 +93,20 @@ export async function describeJob(job: JobRow): Promise<JobView> {
 }
 
 /** The newest jobs of the collaboration; those that are open first. */
-export async function listJobs(actor: Actor, limit = 50): Promise<{ jobs: JobView[] }> {
+export async function listJobs(
+  actor: Actor,
+  { limit, offset }: { limit: number; offset: number },
+): Promise<{ jobs: JobView[] }> {
   demand(actor, 'read');
   const jobs = await JobRow.findAll({
     where: { collaborationId: actor.collaborationId },
     order: [
       [database().literal(`status in ('waiting', 'running')`) as never, 'DESC'],
       ['createdAt', 'DESC'],
+      ['id', 'DESC'],
     ],
     limit,
+    offset,
   });
   return { jobs: await describeJobs(jobs) };
 }

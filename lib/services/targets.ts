@@ -155,6 +155,7 @@ export async function listTargets(
     order: [
       ['raDeg', 'ASC NULLS LAST'],
       ['foldedName', 'ASC'],
+      ['id', 'ASC'],
     ],
     ...page,
   });

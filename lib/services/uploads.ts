@@ -195,7 +195,10 @@ export async function listUploads(
   const survey = slug === undefined ? null : await findSurvey(actor, slug);
   const rows = await UploadRow.findAll({
     where: { collaborationId: actor.collaborationId, ...(survey ? { surveyId: survey.id } : {}) },
-    order: [['createdAt', 'DESC']],
+    order: [
+      ['createdAt', 'DESC'],
+      ['id', 'DESC'],
+    ],
     ...page,
   });
   return Promise.all(rows.map(async (row) => withoutPreview(await describeUpload(row))));

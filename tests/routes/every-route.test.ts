@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { type ZodType, z } from 'zod';
 import type { RouteHandler } from '@/app/api/v1/handler';
+import { isPaged, takesIfMatch, takesKey } from '@/lib/schemas/api-route';
 import { type ApiRoute, apiRoutes } from '@/lib/schemas/api-routes';
 import { database } from '@/models';
 import { withDatabase } from '../support/database';
@@ -160,6 +161,9 @@ it.each(everyRoute)('is described as it is: %s', async (_, route) => {
   else expect(asks.access).not.toBe('open');
   expect(route.body && shapeOf(route.body)).toEqual(asks.body && shapeOf(asks.body));
   expect(route.query && shapeOf(route.query)).toEqual(asks.query && shapeOf(asks.query));
+  expect(isPaged(route)).toBe(asks.isPaged);
+  expect(takesIfMatch(route, apiRoutes)).toBe(asks.takesIfMatch);
+  if (route.method === 'post') expect(takesKey(route)).toBe(asks.takesKey);
   if (asks.status) expect(route.status).toBe(asks.status);
   else if (route.answer ?? route.files) expect(route.status ?? 200).toBe(200);
 });

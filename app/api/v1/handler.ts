@@ -1,14 +1,12 @@
-import { randomUUID } from 'node:crypto';
 import type { ZodType } from 'zod';
 import { type Actor, actorIn, type KnownPerson, type Scope } from '@/lib/access/actor';
 import { addressOf, countAttempt, type LimitName } from '@/lib/access/attempts';
 import { knownPerson, requireSameOrigin } from '@/lib/access/requests';
-import { config } from '@/lib/config';
 import { AccessError, LabError, NotSignedIn } from '@/lib/errors';
-import { withinRequest } from '@/lib/queue/request-id';
 import { parseInput, parseQuery } from '@/lib/schemas/input';
-import { observeRequest } from '@/lib/services/metrics';
-import { logRequest, problemOf } from './problem';
+import { answer, type Seen } from './answer';
+import { answerKept, refuseKey, requireUnchanged } from './conditions';
+import { fromCursor, nextLink } from './paging';
 import { readJson, requireJsonType } from './read-body';
 
 interface RouteOptions<B, Q> {
@@ -20,6 +18,16 @@ interface RouteOptions<B, Q> {
   rawBody?: boolean;
   /** An attempt of this kind is counted per person (per address on open routes). */
   limit?: LimitName;
+}
+
+interface CollaborationOptions<B, Q> extends RouteOptions<B, Q> {
+  scope: Scope;
+  /** Key of the rows in the answer of a list that is read page by page. */
+  paged?: string;
+  /** What reading the same address answers: a write may ask that it has not changed (If-Match). */
+  current?: (context: Omit<Asked<B, Q>, 'body'> & { actor: Actor }) => Promise<unknown>;
+  /** The answer holds what is told once and stored nowhere in clear: no key keeps it. */
+  tellsSecret?: boolean;
 }
 
 interface Asked<B, Q> {
@@ -38,68 +46,37 @@ interface Asks {
   status?: number;
   body?: ZodType;
   query?: ZodType;
+  isPaged: boolean;
+  takesIfMatch: boolean;
+  takesKey: boolean;
 }
 export type RouteHandler = ((request: Request, context: RouteContext) => Promise<Response>) & {
   readonly asks: Asks;
 };
 
+type Made = Pick<Asks, 'status' | 'body' | 'query'> &
+  Partial<Omit<Asks, 'access' | 'status' | 'body' | 'query'>>;
+
 function handler(
   access: Asks['access'],
-  { status, body, query }: Pick<Asks, 'status' | 'body' | 'query'>,
+  { status, body, query, ...features }: Made,
   work: (request: Request, context: RouteContext) => Promise<Response>,
 ): RouteHandler {
-  return Object.assign(work, { asks: { access, status, body, query } });
+  const none = { isPaged: false, takesIfMatch: false, takesKey: false };
+  return Object.assign(work, { asks: { access, status, body, query, ...none, ...features } });
 }
+
+const described = <B, Q>({ status, body, query }: RouteOptions<B, Q>): Made => ({
+  status,
+  body,
+  query,
+});
 
 /** A request without a body needs no content type: its Origin was looked at. */
 const hasBody = ({ headers }: Request) =>
   headers.has('transfer-encoding') || Number(headers.get('content-length') ?? 0) > 0;
 
 const isWrite = (request: Request) => !['GET', 'HEAD', 'OPTIONS'].includes(request.method);
-
-function finish(response: Response, requestId: string): Response {
-  const headers = new Headers(response.headers);
-  headers.set('X-Content-Type-Options', 'nosniff');
-  headers.set('X-Request-Id', requestId);
-  headers.set('Referrer-Policy', 'same-origin');
-  if (config().webAddress.startsWith('https://')) {
-    headers.set('Strict-Transport-Security', 'max-age=31536000; includeSubDomains');
-  }
-  if (!headers.has('Cache-Control')) headers.set('Cache-Control', 'no-store');
-  if (!headers.has('Content-Security-Policy')) {
-    headers.set('Content-Security-Policy', "default-src 'none'; frame-ancestors 'none'; sandbox");
-  }
-  return new Response(response.body, { status: response.status, headers });
-}
-
-function shape(result: unknown, status: number): Response {
-  if (result instanceof Response) return result;
-  if (result === undefined) return new Response(null, { status: 204 });
-  return Response.json(result, { status });
-}
-
-/** Runs one request: whatever happens ends in an answer, a log line and nothing of the inside. */
-async function answer(
-  request: Request,
-  status: number,
-  work: (seen: { person?: KnownPerson }) => Promise<unknown>,
-): Promise<Response> {
-  const requestId = randomUUID();
-  const started = performance.now();
-  const seen: { person?: KnownPerson } = {};
-  let response: Response;
-  let fault: unknown;
-  try {
-    response = finish(shape(await withinRequest(requestId, () => work(seen)), status), requestId);
-  } catch (error) {
-    fault = error;
-    response = finish(problemOf(error, requestId), requestId);
-  }
-  const seconds = (performance.now() - started) / 1000;
-  observeRequest(request, { status: response.status, seconds });
-  logRequest({ request, requestId, started, status: response.status, person: seen.person, fault });
-  return response;
-}
 
 async function readRequest<B, Q>(
   request: Request,
@@ -119,6 +96,7 @@ async function readRequest<B, Q>(
 async function admit<B, Q>(
   request: Request,
   options: RouteOptions<B, Q>,
+  { budgets }: Seen,
 ): Promise<KnownPerson | null> {
   const person = await knownPerson(request);
   const isCookieWrite = isWrite(request) && person?.via === 'session';
@@ -127,7 +105,8 @@ async function admit<B, Q>(
     requireJsonType(request);
   }
   if (person?.tokenId) {
-    await countAttempt('token-requests', person.tokenId, 'This token sends too many requests.');
+    const sentence = 'This token sends too many requests.';
+    await countAttempt('token-requests', person.tokenId, sentence, (left) => budgets.push(left));
   }
   return person;
 }
@@ -139,25 +118,45 @@ function requireScope(person: KnownPerson, scope: Scope): void {
   );
 }
 
-async function countOwn(options: RouteOptions<never, never>, key: string): Promise<void> {
-  if (options.limit) await countAttempt(options.limit, key, 'That is more than the limit allows.');
+async function countOwn(
+  { limit }: { limit?: LimitName },
+  key: string,
+  { budgets }: Seen,
+): Promise<void> {
+  const sentence = 'That is more than the limit allows.';
+  if (limit) await countAttempt(limit, key, sentence, (left) => budgets.push(left));
 }
 
 /** A handler within a collaboration: everything that is not the actor's answers "not found". */
 export function collaborationRoute<B = undefined, Q = undefined>(
-  options: RouteOptions<B, Q> & { scope: Scope },
+  options: CollaborationOptions<B, Q>,
   work: (context: Asked<B, Q> & { actor: Actor }) => Promise<unknown>,
 ): RouteHandler {
-  return handler(options.scope, options, (request, context) =>
+  const { scope, status, body, query, paged, current } = options;
+  const keepsAnswer = !options.rawBody && !options.tellsSecret;
+  const features = {
+    isPaged: paged !== undefined,
+    takesIfMatch: current !== undefined,
+    takesKey: keepsAnswer,
+  };
+  return handler(scope, { status, body, query, ...features }, (request, context) =>
     answer(request, options.status ?? 200, async (seen) => {
-      const person = await admit(request, options);
+      const person = await admit(request, options, seen);
       if (!person) throw new NotSignedIn();
       seen.person = person;
       const { collaboration } = await context.params;
       const actor = await actorIn(person, collaboration);
       requireScope(person, options.scope);
-      await countOwn(options as RouteOptions<never, never>, person.personId);
-      return work({ ...(await readRequest(request, context, options)), actor });
+      await countOwn(options, person.personId, seen);
+      if (!keepsAnswer) refuseKey(request);
+      const asked = { ...(await readRequest(request, context, options)), actor };
+      await requireUnchanged(request, current && (() => current(asked)));
+      if (paged !== undefined) asked.query = fromCursor(asked.query);
+      const result = await answerKept(request, asked, options.status ?? 200, () => work(asked));
+      if (paged !== undefined) {
+        seen.link = nextLink(request, asked.query, result, paged) ?? undefined;
+      }
+      return result;
     }),
   );
 }
@@ -167,18 +166,22 @@ export function personRoute<B = undefined, Q = undefined>(
   options: RouteOptions<B, Q> & { scope: Scope; sessionOnly?: boolean },
   work: (context: Asked<B, Q> & { person: KnownPerson }) => Promise<unknown>,
 ): RouteHandler {
-  return handler(options.sessionOnly ? 'session' : options.scope, options, (request, context) =>
-    answer(request, options.status ?? 200, async (seen) => {
-      const person = await admit(request, options);
-      if (!person) throw new NotSignedIn();
-      seen.person = person;
-      if (options.sessionOnly && person.via === 'token') {
-        throw new AccessError('A token cannot do this: sign in with your password.');
-      }
-      requireScope(person, options.scope);
-      await countOwn(options as RouteOptions<never, never>, person.personId);
-      return work({ ...(await readRequest(request, context, options)), person });
-    }),
+  return handler(
+    options.sessionOnly ? 'session' : options.scope,
+    described(options),
+    (request, context) =>
+      answer(request, options.status ?? 200, async (seen) => {
+        const person = await admit(request, options, seen);
+        if (!person) throw new NotSignedIn();
+        seen.person = person;
+        if (options.sessionOnly && person.via === 'token') {
+          throw new AccessError('A token cannot do this: sign in with your password.');
+        }
+        requireScope(person, options.scope);
+        await countOwn(options, person.personId, seen);
+        refuseKey(request);
+        return work({ ...(await readRequest(request, context, options)), person });
+      }),
   );
 }
 
@@ -189,12 +192,13 @@ export function openRoute<B = undefined, Q = undefined>(
     context: Asked<B, Q> & { person: KnownPerson | null; address: string },
   ) => Promise<unknown>,
 ): RouteHandler {
-  return handler('open', options, (request, context) =>
+  return handler('open', described(options), (request, context) =>
     answer(request, options.status ?? 200, async (seen) => {
       const address = addressOf(request.headers);
+      refuseKey(request);
       await countAttempt('anonymous-requests', address, 'Too many requests come from here.');
       if (options.limit) await countAttempt(options.limit, address, 'Too many attempts from here.');
-      const person = await admit(request, options).catch((error: unknown) => {
+      const person = await admit(request, options, seen).catch((error: unknown) => {
         if (error instanceof LabError && error.status === 401) return null;
         throw error;
       });

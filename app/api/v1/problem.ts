@@ -9,6 +9,7 @@ const TITLES: Record<number, string> = {
   403: 'Not allowed',
   404: 'Not found',
   409: 'Not possible as things stand',
+  412: 'Changed meanwhile',
   413: 'Too large',
   415: 'Another content type is needed',
   422: 'The content was refused',

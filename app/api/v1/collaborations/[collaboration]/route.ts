@@ -5,6 +5,10 @@ import { getCollaboration, updateCollaboration } from '@/lib/services/collaborat
 export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => getCollaboration(actor));
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: updateCollaborationSchema },
+  {
+    scope: 'write',
+    body: updateCollaborationSchema,
+    current: ({ actor }) => getCollaboration(actor),
+  },
   ({ actor, body }) => updateCollaboration(actor, body),
 );

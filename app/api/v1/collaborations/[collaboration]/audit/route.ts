@@ -3,6 +3,6 @@ import { auditQuerySchema } from '@/lib/schemas/audit';
 import { listAudit } from '@/lib/services/audit';
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: auditQuerySchema },
+  { scope: 'read', query: auditQuerySchema, paged: 'entries' },
   ({ actor, query }) => listAudit(actor, query),
 );

@@ -5,6 +5,6 @@ import { createGuestLink, listGuestLinks } from '@/lib/services/releases/guest-l
 export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => listGuestLinks(actor));
 
 export const POST = collaborationRoute(
-  { scope: 'write', body: createGuestLinkSchema, status: 201 },
+  { scope: 'write', body: createGuestLinkSchema, status: 201, tellsSecret: true },
   ({ actor, body }) => createGuestLink(actor, body),
 );

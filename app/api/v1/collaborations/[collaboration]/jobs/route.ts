@@ -1,4 +1,8 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
+import { pageSchema } from '@/lib/schemas/common';
 import { listJobs } from '@/lib/services/jobs';
 
-export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => listJobs(actor));
+export const GET = collaborationRoute(
+  { scope: 'read', query: pageSchema, paged: 'jobs' },
+  ({ actor, query }) => listJobs(actor, query),
+);

@@ -5,6 +5,6 @@ import { changeSettings, getSettings } from '@/lib/services/settings';
 export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => getSettings(actor));
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: changeSettingsSchema },
+  { scope: 'write', body: changeSettingsSchema, current: ({ actor }) => getSettings(actor) },
   ({ actor, body }) => changeSettings(actor, body),
 );

@@ -3,6 +3,6 @@ import { starQuerySchema } from '@/lib/schemas/stars';
 import { listStars } from '@/lib/services/stars';
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: starQuerySchema },
+  { scope: 'read', query: starQuerySchema, paged: 'stars' },
   ({ actor, query }) => listStars(actor, query),
 );

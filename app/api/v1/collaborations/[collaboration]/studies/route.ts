@@ -3,6 +3,6 @@ import { studyQuerySchema } from '@/lib/schemas/studies';
 import { listStudies } from '@/lib/services/studies';
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: studyQuerySchema },
+  { scope: 'read', query: studyQuerySchema, paged: 'studies' },
   ({ actor, query }) => listStudies(actor, query),
 );

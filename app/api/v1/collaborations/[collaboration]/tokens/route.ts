@@ -5,6 +5,6 @@ import { createToken, listTokens } from '@/lib/services/tokens';
 export const GET = collaborationRoute({ scope: 'read' }, ({ actor }) => listTokens(actor));
 
 export const POST = collaborationRoute(
-  { scope: 'write', body: createTokenSchema, status: 201 },
+  { scope: 'write', body: createTokenSchema, status: 201, tellsSecret: true },
   ({ actor, body }) => createToken(actor, body),
 );

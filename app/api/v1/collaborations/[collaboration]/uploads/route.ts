@@ -7,7 +7,7 @@ import { listUploads, receiveUpload } from '@/lib/services/uploads';
 const listQuerySchema = pageSchema.extend({ survey: z.string().optional() });
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: listQuerySchema },
+  { scope: 'read', query: listQuerySchema, paged: 'uploads' },
   async ({ actor, query }) => ({ uploads: await listUploads(actor, query.survey, query) }),
 );
 

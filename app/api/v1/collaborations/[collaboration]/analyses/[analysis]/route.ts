@@ -7,10 +7,15 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: updateAnalysisSchema },
+  {
+    scope: 'write',
+    body: updateAnalysisSchema,
+    current: ({ actor, params }) => getAnalysis(actor, params.analysis),
+  },
   ({ actor, params, body }) => updateAnalysis(actor, params.analysis, body),
 );
 
-export const DELETE = collaborationRoute({ scope: 'write' }, ({ actor, params }) =>
-  removeAnalysis(actor, params.analysis),
+export const DELETE = collaborationRoute(
+  { scope: 'write', current: ({ actor, params }) => getAnalysis(actor, params.analysis) },
+  ({ actor, params }) => removeAnalysis(actor, params.analysis),
 );

@@ -7,6 +7,10 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: nameStartSchema },
+  {
+    scope: 'write',
+    body: nameStartSchema,
+    current: ({ actor, params }) => getCoolingRelation(actor, params.table),
+  },
   ({ actor, params, body }) => nameStart(actor, params.table, body),
 );

@@ -7,6 +7,10 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: updateExerciseSchema },
+  {
+    scope: 'write',
+    body: updateExerciseSchema,
+    current: ({ actor, params }) => getExercise(actor, params.exercise),
+  },
   ({ actor, params, body }) => updateExercise(actor, params.exercise, body),
 );

@@ -11,7 +11,12 @@ export const GET = collaborationRoute(
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', query: populationVersionQuerySchema, body: sharePopulationSchema },
+  {
+    scope: 'write',
+    query: populationVersionQuerySchema,
+    body: sharePopulationSchema,
+    current: ({ actor, params, query }) => getPopulation(actor, params.population, query.version),
+  },
   ({ actor, params, query, body }) =>
     sharePopulation(actor, params.population, query.version, body),
 );

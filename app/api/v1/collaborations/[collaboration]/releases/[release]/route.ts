@@ -8,10 +8,15 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: updateReleaseSchema },
+  {
+    scope: 'write',
+    body: updateReleaseSchema,
+    current: ({ actor, params }) => getRelease(actor, params.release),
+  },
   ({ actor, params, body }) => updateRelease(actor, params.release, body),
 );
 
-export const DELETE = collaborationRoute({ scope: 'write' }, ({ actor, params }) =>
-  removeRelease(actor, params.release),
+export const DELETE = collaborationRoute(
+  { scope: 'write', current: ({ actor, params }) => getRelease(actor, params.release) },
+  ({ actor, params }) => removeRelease(actor, params.release),
 );

@@ -5,6 +5,7 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
   getStudy(actor, params.study),
 );
 
-export const DELETE = collaborationRoute({ scope: 'write' }, ({ actor, params }) =>
-  removeStudy(actor, params.study),
+export const DELETE = collaborationRoute(
+  { scope: 'write', current: ({ actor, params }) => getStudy(actor, params.study) },
+  ({ actor, params }) => removeStudy(actor, params.study),
 );

@@ -7,6 +7,10 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: updateSurveySchema },
+  {
+    scope: 'write',
+    body: updateSurveySchema,
+    current: ({ actor, params }) => getSurvey(actor, params.survey),
+  },
   ({ actor, params, body }) => updateSurvey(actor, params.survey, body),
 );

@@ -7,6 +7,10 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: leaveOutSchema },
+  {
+    scope: 'write',
+    body: leaveOutSchema,
+    current: ({ actor, params }) => getTarget(actor, params.target),
+  },
   ({ actor, params, body }) => markTarget(actor, params.target, body),
 );

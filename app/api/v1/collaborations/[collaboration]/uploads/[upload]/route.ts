@@ -7,6 +7,10 @@ export const GET = collaborationRoute({ scope: 'read' }, ({ actor, params }) =>
 );
 
 export const PATCH = collaborationRoute(
-  { scope: 'write', body: uploadSettingsSchema },
+  {
+    scope: 'write',
+    body: uploadSettingsSchema,
+    current: ({ actor, params }) => getUpload(actor, params.upload),
+  },
   ({ actor, params, body }) => changeUpload(actor, params.upload, body),
 );

@@ -3,6 +3,6 @@ import { pageSchema } from '@/lib/schemas/common';
 import { listTargets } from '@/lib/services/targets';
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: pageSchema },
+  { scope: 'read', query: pageSchema, paged: 'targets' },
   ({ actor, params, query }) => listTargets(actor, params.survey, query),
 );
