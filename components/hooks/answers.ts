@@ -1,15 +1,18 @@
 import { z } from 'zod';
 import { sessionSchema } from '@/lib/schemas/account';
+import { newKeySchema, recoveryCodesSchema } from '@/lib/schemas/account-access';
 import { activityPageSchema } from '@/lib/schemas/activity';
 import { analysisSchema } from '@/lib/schemas/analyses';
 import { bundleImportSchema } from '@/lib/schemas/bundles';
 import { candidateDetailSchema, candidateListSchema } from '@/lib/schemas/candidates';
 import { combinationPreviewSchema, combinationSchema } from '@/lib/schemas/combinations';
 import { coolingRelationSchema } from '@/lib/schemas/cooling';
+import { depositSchema } from '@/lib/schemas/deposits';
 import { exerciseDetailSchema, exerciseSchema, submissionSchema } from '@/lib/schemas/exercises';
 import { exportListSchema } from '@/lib/schemas/exports';
 import { helpDefinitionSchema } from '@/lib/schemas/help';
 import { jobSchema } from '@/lib/schemas/jobs';
+import { leavingSchema } from '@/lib/schemas/leaving';
 import { failedMessagesSchema, mailPreferencesSchema, stoppedMailSchema } from '@/lib/schemas/mail';
 import { mapStoreSchema, surveyMapsSchema } from '@/lib/schemas/map-states';
 import { noteListSchema } from '@/lib/schemas/notes';
@@ -69,6 +72,7 @@ export {
   coolingRelationSchema,
   coolingTableSchema,
   dependentsSchema,
+  depositSchema,
   exerciseDetailSchema,
   exerciseSchema,
   exportListSchema,
@@ -80,12 +84,14 @@ export {
   invitationOfferSchema,
   invitationSchema,
   jobSchema,
+  leavingSchema,
   mailPreferencesSchema,
   mapStoreSchema,
   mapViewSchema,
   memberSchema,
   meSchema,
   newGuestLinkSchema,
+  newKeySchema,
   newTokenSchema,
   noteListSchema,
   overlapsSchema,
@@ -93,6 +99,7 @@ export {
   populationListSchema,
   populationSchema,
   proposedSchema,
+  recoveryCodesSchema,
   releaseSchema,
   runSchema,
   runSummarySchema,

@@ -6,17 +6,33 @@ import { answer } from './answer';
 import { request, requestNothing } from './request';
 
 /** Starts a session; a refusal comes back as the sentence that the form shows. */
-export async function startSession(email: string, password: string): Promise<string | null> {
+export async function startSession(
+  email: string,
+  password: string,
+  secondFactor?: string,
+): Promise<string | null> {
   const { signIn } = await import('next-auth/react');
-  const reply = await signIn('credentials', { email, password, redirect: false });
+  const reply = await signIn('credentials', {
+    email,
+    password,
+    ...(secondFactor === undefined ? {} : { secondFactor }),
+    redirect: false,
+  });
   if (reply?.ok && !reply.error) return null;
   return reply?.error ?? 'No answer from the server; try again.';
 }
 
 /** The same by a link that came by mail. */
-export async function startSessionByLink(code: string): Promise<string | null> {
+export async function startSessionByLink(
+  code: string,
+  secondFactor?: string,
+): Promise<string | null> {
   const { signIn } = await import('next-auth/react');
-  const reply = await signIn('link', { code, redirect: false });
+  const reply = await signIn('link', {
+    code,
+    ...(secondFactor === undefined ? {} : { secondFactor }),
+    redirect: false,
+  });
   if (reply?.ok && !reply.error) return null;
   return reply?.error ?? 'No answer from the server; try again.';
 }

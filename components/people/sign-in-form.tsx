@@ -1,12 +1,15 @@
 'use client';
 
 import Link from 'next/link';
+import { useState } from 'react';
 import { leaveForOrcid, startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
+import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
+import { SecondFactorField } from './second-factor-field';
 
 const loadSchema = async () => (await import('@/lib/schemas/people')).signInSchema;
 
@@ -16,12 +19,15 @@ export function SignInForm({ next, hasOrcid }: { next: string; hasOrcid: boolean
     email: '',
     password: '',
   });
+  const [isCodeAsked, setCodeAsked] = useState(false);
+  const [code, setCode] = useState('');
   return (
     <form
       noValidate
       className="flex flex-col gap-4"
       onSubmit={submit(async ({ email, password }) => {
-        const sentence = await startSession(email, password);
+        const sentence = await startSession(email, password, isCodeAsked ? code : undefined);
+        if (sentence === CODE_IS_ASKED) setCodeAsked(true);
         if (sentence === null) window.location.assign(next);
         else setRefusal(sentence);
       })}
@@ -33,7 +39,10 @@ export function SignInForm({ next, hasOrcid }: { next: string; hasOrcid: boolean
         required
         {...field('password')}
       />
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {isCodeAsked && <SecondFactorField value={code} onChange={setCode} />}
+      {refusal !== null && refusal !== CODE_IS_ASKED && (
+        <Notice tone="bad" title={refusal} isAnnounced />
+      )}
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Sign in
       </Button>

@@ -27,6 +27,7 @@ export const limits = {
   'link-address': { points: 30, seconds: 15 * MINUTE_S },
   'link-account': { points: 3, seconds: 15 * MINUTE_S },
   'reset-address': { points: 20, seconds: 15 * MINUTE_S },
+  'second-factor': { points: 5, seconds: 15 * MINUTE_S },
   'password-changes': { points: 10, seconds: 15 * MINUTE_S },
   notes: { points: 120, seconds: 60 * MINUTE_S },
   invitations: { points: 60, seconds: 60 * MINUTE_S },

@@ -4,8 +4,11 @@ import { adjacencyGraphs, dictionary } from '@zxcvbn-ts/language-common';
 import { InputError } from '@/lib/errors';
 
 const SHORTEST = 15;
+const SHORTEST_WITH_FACTOR = 8;
 const LONGEST = 128;
 const LOWEST_SCORE = 3;
+/** No eight characters reach 3, random ones neither: this one counts ten guesses for each. */
+const LOWEST_SCORE_WITH_FACTOR = 2;
 /** A shorter part of a name stands in too many innocent words. */
 const SHORTEST_NAME_PART = 4;
 
@@ -37,17 +40,23 @@ function scoreOf(password: string, names: string[]): number {
   return strength.check(password, names).score;
 }
 
-/** Why a password is refused, or null. */
+/** Whether the password is long enough where no second factor stands beside it. */
+export const isLongAlone = (password: string): boolean =>
+  [...normalised(password)].length >= SHORTEST;
+
+/** Why a password is refused, or null; beside a second factor it may be shorter. */
 export function passwordFault(
   password: string,
   owner: Owner,
+  hasSecondFactor = false,
 ): { code: string; message: string } | null {
   const given = normalised(password);
   const length = [...given].length;
-  if (length < SHORTEST) {
+  const shortest = hasSecondFactor ? SHORTEST_WITH_FACTOR : SHORTEST;
+  if (length < shortest) {
     return {
       code: 'too-short',
-      message: `found ${length} characters; expected at least ${SHORTEST}`,
+      message: `found ${length} characters; expected at least ${shortest}`,
     };
   }
   if (length > LONGEST) {
@@ -61,7 +70,8 @@ export function passwordFault(
       message: 'it holds your name, your address or the name of this product; choose other words',
     };
   }
-  if (scoreOf(given, names) < LOWEST_SCORE) {
+  const lowest = hasSecondFactor ? LOWEST_SCORE_WITH_FACTOR : LOWEST_SCORE;
+  if (scoreOf(given, names) < lowest) {
     return {
       code: 'password-guessable',
       message:
@@ -72,8 +82,8 @@ export function passwordFault(
 }
 
 /** @throws InputError when the password is too short, too long, guessable or named after its owner */
-export function checkPassword(password: string, owner: Owner): void {
-  const fault = passwordFault(password, owner);
+export function checkPassword(password: string, owner: Owner, hasSecondFactor = false): void {
+  const fault = passwordFault(password, owner, hasSecondFactor);
   if (fault) throw new InputError({ item: 'password', ...fault });
 }
 

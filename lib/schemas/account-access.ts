@@ -22,12 +22,52 @@ export const resetPasswordSchema = z.strictObject({
 });
 export type ResetPassword = z.infer<typeof resetPasswordSchema>;
 
+export const secondFactorSchema = z.object({
+  /** Whether a code is asked for at sign-in. */
+  isOn: z.boolean(),
+  codesLeft: z.number().int(),
+});
+export type SecondFactorView = z.infer<typeof secondFactorSchema>;
+
+const ownPassword = z.string().max(128);
+/** Six digits, or a recovery code as somebody types it. */
+const code = z.string().min(1).max(40);
+export const beginFactorSchema = z.strictObject({ password: ownPassword });
+export const factorCodeSchema = z.strictObject({ code });
+export const removeFactorSchema = z.strictObject({ password: ownPassword, code });
+
+/** Shown while it is set up, and never again: the key in base 32, and as an `otpauth:` address. */
+export const newKeySchema = z.object({ key: z.string(), address: z.string() });
+export type NewKey = z.infer<typeof newKeySchema>;
+export const recoveryCodesSchema = z.object({ recoveryCodes: z.array(z.string()) });
+export type RecoveryCodes = z.infer<typeof recoveryCodesSchema>;
+
+const factor = '/api/v1/me/second-factor';
+
 /** Ways into an account besides its password. */
 export const accountRoutes: ApiRoute[] = [
   route('post', '/api/v1/account-links', 'open', 'Ask for a link by e-mail: to sign in, or reset', {
     body: askLinkSchema,
   }),
   route('delete', '/api/v1/me/orcid', 'session', 'Take the ORCID iD off your account'),
+  route('get', factor, 'session', 'Whether a code is asked for when you sign in', {
+    answer: secondFactorSchema,
+  }),
+  route('post', factor, 'session', 'A key for an authenticator; its code turns it on', {
+    body: beginFactorSchema,
+    answer: newKeySchema,
+  }),
+  route('post', `${factor}/confirm`, 'session', 'Turn the second factor on by its first code', {
+    body: factorCodeSchema,
+    answer: recoveryCodesSchema,
+  }),
+  route('post', `${factor}/recovery-codes`, 'session', 'New recovery codes, shown once', {
+    body: factorCodeSchema,
+    answer: recoveryCodesSchema,
+  }),
+  route('post', `${factor}/remove`, 'session', 'Turn the second factor off', {
+    body: removeFactorSchema,
+  }),
   route('post', '/api/v1/password-reset', 'open', 'Set a new password by the link; sessions end', {
     body: resetPasswordSchema,
   }),

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { newPasswordSchema } from './account-access';
 import { idSchema, lineSchema, moment } from './common';
 import { passwordSchema } from './people';
 
@@ -6,7 +7,7 @@ import { passwordSchema } from './people';
 export const updateMeSchema = z.strictObject({ name: lineSchema(100) });
 export const changePasswordSchema = z.strictObject({
   currentPassword: z.string().max(128),
-  newPassword: passwordSchema,
+  newPassword: newPasswordSchema,
 });
 export type ChangePassword = z.infer<typeof changePasswordSchema>;
 

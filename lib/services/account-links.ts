@@ -2,6 +2,7 @@ import { setTimeout as pause } from 'node:timers/promises';
 import { dropLinks, findLink, makeLink, takeLink } from '@/lib/access/account-links';
 import { attemptKey, countAttempt, forgetAttempts } from '@/lib/access/attempts';
 import { checkPassword, hashPassword } from '@/lib/access/passwords';
+import { secondFactorOf } from '@/lib/access/second-factor';
 import { endSessions } from '@/lib/access/sessions';
 import { LabError } from '@/lib/errors';
 import { queueMessage, withdrawMessages } from '@/lib/mail/outbox';
@@ -74,7 +75,8 @@ export async function resetPassword(input: ResetPassword, address: string): Prom
   const email = await inTransaction(async (transaction) => {
     const person = await takeLink(input.code, 'password-reset', transaction);
     if (!person) throw linkIsOver();
-    checkPassword(input.password, person);
+    const { isOn } = await secondFactorOf(person.id, transaction);
+    checkPassword(input.password, person, isOn);
     const passwordHash = await hashPassword(input.password);
     await PersonRow.update({ passwordHash }, { where: { id: person.id }, transaction });
     await endSessions(person.id, transaction);

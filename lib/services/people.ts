@@ -1,7 +1,9 @@
 import { QueryTypes, type Transaction, UniqueConstraintError } from 'sequelize';
+import { dropLinks } from '@/lib/access/account-links';
 import type { Actor, KnownPerson } from '@/lib/access/actor';
 import { checkPassword, hashPassword, isPassword } from '@/lib/access/passwords';
 import { demand, may } from '@/lib/access/permissions';
+import { secondFactorOf } from '@/lib/access/second-factor';
 import { endSessions } from '@/lib/access/sessions';
 import { Conflict, InputError, NotFound } from '@/lib/errors';
 import type { ChangePassword } from '@/lib/schemas/account';
@@ -85,10 +87,12 @@ export async function changePassword(person: KnownPerson, input: ChangePassword)
         message: 'this is not your password',
       });
     }
-    checkPassword(input.newPassword, row);
+    const { isOn } = await secondFactorOf(row.id, transaction);
+    checkPassword(input.newPassword, row, isOn);
     row.passwordHash = await hashPassword(input.newPassword);
     await row.save({ transaction });
     await endSessions(row.id, transaction, person.sessionId ?? null);
+    await dropLinks(row.id, transaction);
     const item = { kind: 'person', id: row.id };
     await recordAudit(person, 'change-password', item, 'changed their password', transaction);
   });

@@ -1,5 +1,5 @@
 import type { Transaction } from 'sequelize';
-import { type LinkPerson, takeLink } from '@/lib/access/account-links';
+import { findLink, type LinkPerson, makeLink, takeLink } from '@/lib/access/account-links';
 import { attemptKey, countAttempt, forgetAttempts, uncountAttempt } from '@/lib/access/attempts';
 import { isPassword } from '@/lib/access/passwords';
 import { beginSession } from '@/lib/access/sessions';
@@ -8,11 +8,14 @@ import { signInSchema } from '@/lib/schemas/people';
 import { database, inTransaction, PersonRow } from '@/models';
 import { linkIsOver } from './account-links';
 import { recordAudit } from './audit';
+import { passSecondFactor, readSecondFactor } from './second-factor';
 
 /** Who tries to sign in, as far as that can be believed. */
 export interface Visitor {
   address: string;
   userAgent: string | null;
+  /** Code of an authenticator or recovery code, where the person uses one. */
+  secondFactor?: string;
 }
 
 export interface SignInAttempt extends Visitor {
@@ -58,6 +61,18 @@ async function letIn(
   return { id: person.id, name: person.name, email: person.email, sessionId };
 }
 
+/** Refuses who has to show a code and has none, or a wrong one; a wrong one stands in the log. */
+async function demandCode(personId: string, { secondFactor, address }: Visitor): Promise<void> {
+  try {
+    await passSecondFactor(personId, secondFactor);
+  } catch (refusal) {
+    if (secondFactor) {
+      await inTransaction((t) => recordSignIn(personId, 'sign-in-refused', address, t));
+    }
+    throw refusal;
+  }
+}
+
 /**
  * Begins a session for the person whose password this is.
  *
@@ -86,6 +101,7 @@ export async function signIn(attempt: SignInAttempt): Promise<SignedIn> {
   await forgetAttempts('sign-in-account-address', `${account}:${address}`);
   await forgetAttempts('sign-in-account', account);
   await uncountAttempt('sign-in-address', address);
+  await demandCode(person.id, attempt);
   return inTransaction((transaction) => letIn(person, attempt, transaction));
 }
 
@@ -96,6 +112,9 @@ export async function signIn(attempt: SignInAttempt): Promise<SignedIn> {
  */
 export async function signInByLink(attempt: Visitor & { code: string }): Promise<SignedIn> {
   await countAttempt('sign-in-address', attempt.address, TOO_MANY_HERE);
+  // Before the link is used up: a mistyped code does not cost it.
+  const found = await findLink(attempt.code, 'sign-in');
+  if (found) await demandCode(found.id, attempt);
   const signedIn = await inTransaction(async (transaction) => {
     const person = await takeLink(attempt.code, 'sign-in', transaction);
     if (!person) throw linkIsOver();
@@ -108,11 +127,20 @@ export async function signInByLink(attempt: Visitor & { code: string }): Promise
 /**
  * Begins a session for the person whose account is linked with an iD that ORCID has confirmed.
  *
- * @returns null where no account is linked with it: an address of mail is never looked at
+ * @returns null where no account is linked with it: an address of mail is never looked at; the code
+ *   of a link where the person has to show a code of the second factor first
  */
-export async function signInByOrcid(orcid: string, visitor: Visitor): Promise<SignedIn | null> {
+export async function signInByOrcid(
+  orcid: string,
+  visitor: Visitor,
+): Promise<SignedIn | { link: string } | null> {
   database();
   const person = await PersonRow.findOne({ where: { orcid, suspendedAt: null } });
   if (!person) return null;
-  return inTransaction((transaction) => letIn(person, visitor, transaction, 'orcid'));
+  const { isOn } = await readSecondFactor({ personId: person.id });
+  return inTransaction(async (transaction) => {
+    if (!isOn) return letIn(person, visitor, transaction, 'orcid');
+    const { code } = await makeLink(person.id, 'sign-in', transaction);
+    return { link: code };
+  });
 }

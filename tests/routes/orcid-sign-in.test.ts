@@ -15,6 +15,8 @@ vi.stubEnv('ORCID_CLIENT_ID', 'a-client');
 vi.stubEnv('ORCID_CLIENT_SECRET', 'its secret');
 
 const { DELETE: unlink } = await import('@/app/api/v1/me/orcid/route');
+const { beginFactor } = await import('@/lib/access/second-factor');
+const { inTransaction } = await import('@/models');
 const { Browser } = await import('../support/auth-browser');
 const { withDatabase } = await import('../support/database');
 const { call, createPerson, sessionCookieOf, webAddress } = await import('../support/people');
@@ -129,6 +131,20 @@ describe('an ORCID iD', () => {
     await query('delete from session where person_id = $1', [second.id]);
     expect((await comeBack(late, answer)).searchParams.get('error')).toBe('OrcidSignedOut');
     expect(await linked(second)).toBeNull();
+  });
+
+  it('leads to the question for a code where the person has a second factor', async () => {
+    const person = await createPerson();
+    await go(await browserOf(person), 'orcid-link', ilse.orcid);
+    await inTransaction((transaction) => beginFactor(person.id, transaction));
+    await query('update second_factor set confirmed_at = now()');
+    const browser = new Browser();
+    const back = await go(browser, 'orcid', ilse.orcid);
+    expect(back.pathname).toMatch(/^\/sign-in\/link\/[\w-]{43}$/);
+    await nobody(browser);
+    const code = back.pathname.split('/').at(-1) ?? '';
+    expect((await browser.post('callback/link', { code })).status).toBe(401);
+    await nobody(browser);
   });
 
   it('lets nobody in who is suspended', async () => {

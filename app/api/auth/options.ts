@@ -71,22 +71,31 @@ export function authOptions(
     providers: [
       CredentialsProvider({
         id: 'credentials',
-        credentials: { email: { type: 'email' }, password: { type: 'password' } },
+        credentials: {
+          email: { type: 'email' },
+          password: { type: 'password' },
+          secondFactor: { type: 'text' },
+        },
         authorize: (given, request) =>
           attempt(outcome, request.headers, (visitor) =>
             signIn({
               ...visitor,
               email: String(given?.email ?? ''),
               password: String(given?.password ?? ''),
+              secondFactor: given?.secondFactor,
             }),
           ),
       }),
       CredentialsProvider({
         id: 'link',
-        credentials: { code: { type: 'text' } },
+        credentials: { code: { type: 'text' }, secondFactor: { type: 'text' } },
         authorize: (given, request) =>
           attempt(outcome, request.headers, (visitor) =>
-            signInByLink({ ...visitor, code: String(given?.code ?? '') }),
+            signInByLink({
+              ...visitor,
+              code: String(given?.code ?? ''),
+              secondFactor: given?.secondFactor,
+            }),
           ),
       }),
       ...(orcid === null

@@ -47,5 +47,7 @@ export async function enterByOrcid(confirmed: string, headers: Headers): Promise
   if (orcid === null) return refused('OrcidDamaged');
   const visitor = { address: addressOf(headers), userAgent: headers.get('user-agent') };
   const signedIn = await signInByOrcid(orcid, visitor);
-  return signedIn === null ? refused('OrcidUnknown') : { signedIn };
+  if (signedIn === null) return refused('OrcidUnknown');
+  if ('link' in signedIn) return { goTo: `${config().webAddress}/sign-in/link/${signedIn.link}` };
+  return { signedIn };
 }

@@ -40,9 +40,9 @@ export function PasswordForm({ onChanged }: { onChanged(): void }) {
       <PasswordField
         label="New password"
         name="next"
-        hint="At least 15 characters; a few words that belong together for nobody else"
+        hint="At least 15 characters, or 8 beside a second factor; a few words that belong together for nobody else"
         autoComplete="new-password"
-        minLength={15}
+        minLength={8}
         maxLength={128}
         required
       />

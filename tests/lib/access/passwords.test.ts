@@ -49,6 +49,18 @@ describe('passwordFault(password, owner)', () => {
   });
 });
 
+describe('passwordFault(password, owner, beside a second factor)', () => {
+  const beside = (password: string) => passwordFault(password, owner, true)?.code ?? 'fine';
+
+  it('asks for 8 characters that are no listed words, and for no name', () => {
+    expect(beside('Kq8-mo3')).toBe('too-short');
+    expect(beside('Kq8-mo3z')).toBe('fine');
+    expect(beside('password1')).toBe('password-guessable');
+    expect(beside('qwertyui')).toBe('password-guessable');
+    expect(beside('Ruth Castellan 8')).toBe('password-name');
+  });
+});
+
 describe('checkPassword(password, owner)', () => {
   it('names the field', () => {
     try {
