@@ -12,6 +12,8 @@ import { CompanionVerdictRow, defineCompanionVerdict } from './companion-verdict
 import { CompletenessMapRow, defineCompletenessMap } from './completeness-map';
 import { ContrastCurveRow, defineContrastCurve } from './contrast-curve';
 import { CoolingTableRow, defineCoolingTable } from './cooling-table';
+import { CollaborationExportRow, DepartureRow, defineDeparture } from './departure';
+import { DepositRow, defineDeposit } from './deposit';
 import { defineExercise, ExerciseRow } from './exercise';
 import { defineExerciseStart, ExerciseStartRow } from './exercise-start';
 import { defineExerciseSubmission, ExerciseSubmissionRow } from './exercise-submission';
@@ -44,6 +46,7 @@ export {
   AnalysisRow,
   AuditEntryRow,
   BundleImportRow,
+  CollaborationExportRow,
   CollaborationRow,
   ColumnMemoryRow,
   CombinationRow,
@@ -53,6 +56,8 @@ export {
   CompletenessMapRow,
   ContrastCurveRow,
   CoolingTableRow,
+  DepartureRow,
+  DepositRow,
   ExerciseRow,
   ExerciseStartRow,
   ExerciseSubmissionRow,
@@ -144,6 +149,8 @@ function defineModels(sequelize: Sequelize): void {
   defineExerciseSubmission(sequelize);
   defineFrozenRun(sequelize);
   defineRelease(sequelize);
+  defineDeposit(sequelize);
+  defineDeparture(sequelize);
   defineGuestLink(sequelize);
   defineNote(sequelize);
   defineOutgoingMessage(sequelize);

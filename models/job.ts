@@ -18,7 +18,9 @@ export class JobRow extends Model<InferAttributes<JobRow>, InferCreationAttribut
     | 'compute-run'
     | 'compute-study'
     | 'verify-release'
-    | 'recreate-run';
+    | 'recreate-run'
+    | 'deposit-release'
+    | 'export-collaboration';
   declare surveyId: CreationOptional<string | null>;
   declare status: CreationOptional<JobStatus>;
   declare payload: CreationOptional<Record<string, unknown>>;

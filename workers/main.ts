@@ -5,6 +5,7 @@ import { Logger, run, type TaskList, type WorkerEvents } from 'graphile-worker';
 import { config } from '@/lib/config';
 import { deliverySchema, type JobKind } from '@/lib/queue/kinds';
 import { closeDatabase } from '@/models';
+import { startDepartures } from './departures';
 import { startHeart } from './heart';
 import { describeError, log } from './log';
 import { perform, type Work } from './perform';
@@ -13,6 +14,8 @@ import { startPost } from './post';
 import { performComputeMaps } from './tasks/compute-maps';
 import { performComputeRun } from './tasks/compute-run';
 import { performComputeStudy } from './tasks/compute-study';
+import { performDepositRelease } from './tasks/deposit-release';
+import { performExportCollaboration } from './tasks/export-collaboration';
 import { performRecreateRun } from './tasks/recreate-run';
 import { performVerifyRelease } from './tasks/verify-release';
 
@@ -22,6 +25,8 @@ const tasks: Record<JobKind, (work: Work) => Promise<void>> = {
   'compute-study': performComputeStudy,
   'verify-release': performVerifyRelease,
   'recreate-run': performRecreateRun,
+  'deposit-release': performDepositRelease,
+  'export-collaboration': performExportCollaboration,
 };
 
 /** Jobs at once: one per thread would let many small runs wait behind one survey's maps. */
@@ -63,6 +68,7 @@ async function main(): Promise<void> {
   });
   const heart = await startHeart(() => [...workerIds], `${os.hostname()}:${process.pid}`);
   const post = startPost();
+  const departures = startDepartures();
   log('info', 'worker ready', { threads: pool.threads, process: process.pid });
 
   let isStopping = false;
@@ -73,6 +79,7 @@ async function main(): Promise<void> {
     shutdown.abort();
     await runner.stop();
     await post.stop();
+    await departures.stop();
     await heart.stop();
     await pool.close();
     await closeDatabase();

@@ -4,6 +4,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import type { ReleasePage as Page, ShownRun } from '@/lib/schemas/release-page';
 import { CopyText } from './copy-text';
+import { DepositLine } from './deposit-line';
 import { LevelConsole } from './level-console';
 import { LimitsTable } from './limits-table';
 import { ReleaseFiles } from './release-files';
@@ -189,6 +190,7 @@ export function ReleasePage({ page }: { page: Page }) {
             }
           />
           <p className="max-w-[80ch] text-ink2 [overflow-wrap:anywhere]">{page.citation.text}</p>
+          {page.deposit && <DepositLine deposit={page.deposit} />}
         </section>
       )}
       {(page.note !== '' || page.licence !== null) && (

@@ -21,7 +21,9 @@ import { StateMark } from '@/components/ui/state-mark';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
+import type { DepositView } from '@/lib/schemas/deposits';
 import type { GuestLinkView, ReleaseView } from '@/lib/schemas/releases';
+import { DepositPart } from './deposit-part';
 import { GiveLink } from './give-link';
 import { GuestLinks } from './guest-links';
 import { ReleaseSteps } from './release-steps';
@@ -31,12 +33,14 @@ interface ReleaseScreenProps {
   collaboration: string;
   initial: ReleaseView;
   links: GuestLinkView[];
+  deposit: DepositView;
   /** Public address, whether or not it answers yet. */
   address: string;
 }
 
 /** A release from draft to public page: its runs, its signatures, and the check between them. */
-export function ReleaseScreen({ collaboration, initial, links, address }: ReleaseScreenProps) {
+export function ReleaseScreen(props: ReleaseScreenProps) {
+  const { collaboration, initial, links, address, deposit } = props;
   const router = useRouter();
   const { data: release = initial, mutate } = useRelease(collaboration, initial);
   const [busy, setBusy] = useState<string>();
@@ -172,6 +176,9 @@ export function ReleaseScreen({ collaboration, initial, links, address }: Releas
               </Button>
             )}
           </div>
+          {release.state === 'published' && (
+            <DepositPart collaboration={collaboration} release={release} initial={deposit} />
+          )}
         </section>
       </div>
       <Dialog

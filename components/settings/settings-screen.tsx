@@ -8,10 +8,12 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { useMoment } from '@/components/ui/time-zone';
+import type { LeavingView } from '@/lib/schemas/leaving';
 import type { FailedMessage } from '@/lib/schemas/mail';
 import type { ChangeSettings, SettingsView } from '@/lib/schemas/settings';
 import { ArchivePart } from './archive-part';
 import { FailedMail } from './failed-mail';
+import { LeavingPart } from './leaving-part';
 import { PlaceForm } from './place-form';
 import { RulesForm } from './rules-form';
 
@@ -23,11 +25,13 @@ interface SettingsScreenProps {
   zones: string[];
   /** Null for whom they do not concern. */
   failed: FailedMessage[] | null;
+  /** Null for whoever is no owner. */
+  leaving: LeavingView | null;
 }
 
 /** What owners settle for everybody; other members read it. */
 export function SettingsScreen(props: SettingsScreenProps) {
-  const { collaboration, initial, analyses, zones, failed } = props;
+  const { collaboration, initial, analyses, zones, failed, leaving } = props;
   const [settings, setSettings] = useState(initial);
   const [refusal, setRefusal] = useState<string | null>(null);
   const [saved, setSaved] = useState<string | null>(null);
@@ -92,6 +96,7 @@ export function SettingsScreen(props: SettingsScreenProps) {
             <ArchivePart {...shared} />
           </section>
         )}
+        {leaving !== null && <LeavingPart collaboration={settings.slug} initial={leaving} />}
       </div>
     </>
   );

@@ -145,6 +145,11 @@ export const permissions = {
     ['no', 'no', 'no', 'no', 'yes'],
     'Ask an owner to withdraw it',
   ),
+  'deposit-release': row(
+    'send a published release to an open repository',
+    ['no', 'no', 'no', 'yes', 'yes'],
+    'Ask an author or an owner to send it',
+  ),
   'link-guest': row(
     'give a guest a link',
     ['no', 'no', 'no', 'yes', 'yes'],

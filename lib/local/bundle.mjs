@@ -9,6 +9,7 @@ const scripts = [
   'lib/local/migrate.ts',
   'lib/local/seed.ts',
   'lib/local/mailbox.ts',
+  'lib/local/repository-stand-in.ts',
   'lib/local/orcid-stand-in.ts',
 ];
 

@@ -4,7 +4,13 @@ import path from 'node:path';
 import { LauncherProblem, root } from './environment.mjs';
 import { findFreePort } from './ports.mjs';
 import { run } from './process-run.mjs';
-import { mailboxService, orcidService, webService, workerService } from './services.mjs';
+import {
+  mailboxService,
+  orcidService,
+  repositoryService,
+  webService,
+  workerService,
+} from './services.mjs';
 
 /**
  * Where one running product lives; `npm start` and the browser tests each have their own.
@@ -18,6 +24,7 @@ import { mailboxService, orcidService, webService, workerService } from './servi
  * @property {string} address
  * @property {{ mailUrl: string, mailboxUrl?: string, smtpPort?: number }} mail
  * @property {Record<string, string>} [orcidStandIn] what web server and stand-in are told of each other
+ * @property {Record<string, string>} [repositoryStandIn] what worker and stand-in are told of each other
  * @property {Record<string, string>} secrets
  * @property {boolean} isDevelopment
  */
@@ -55,6 +62,26 @@ export async function chooseOrcidStandIn(
   };
 }
 
+/**
+ * Settings of the practice repository: only for the demonstration on this machine, and only where no
+ * open repository is set up.
+ *
+ * @returns {Promise<Record<string, string> | undefined>}
+ */
+export async function chooseRepositoryStandIn(
+  /** @type {number} */ webPort,
+  /** @type {boolean} */ isDemo,
+  /** @type {NodeJS.ProcessEnv} */ given = process.env,
+) {
+  if (!isDemo || given.NEXTAUTH_URL || given.REPOSITORY_URL || given.RAREBOUND_HOST)
+    return undefined;
+  const port = await findFreePort(webPort + 4, [webPort + 1, webPort + 2, webPort + 3]);
+  return {
+    REPOSITORY_URL: `http://127.0.0.1:${port}`,
+    REPOSITORY_TOKEN: randomBytes(16).toString('hex'),
+  };
+}
+
 /** @returns {NodeJS.ProcessEnv} what each process of the product is told */
 export function productEnvironment(/** @type {Product} */ product) {
   const { mailUrl, mailboxUrl } = product.mail;
@@ -65,6 +92,7 @@ export function productEnvironment(/** @type {Product} */ product) {
     NEXTAUTH_URL: product.address,
     ...product.secrets,
     ...product.orcidStandIn,
+    ...product.repositoryStandIn,
     MAIL_URL: mailUrl,
     ...(mailboxUrl === undefined ? {} : { MAILBOX_URL: mailboxUrl }),
     RAREBOUND_DATA_DIR: product.folder,
@@ -84,7 +112,7 @@ export async function runScript(/** @type {Product} */ product, /** @type {strin
 }
 
 /**
- * Starts mailbox, stand-in, worker and web server, and returns when the web server answers.
+ * Starts mailbox, stand-ins, worker and web server, and returns when the web server answers.
  *
  * @param {import('./supervisor.mjs').Supervisor} supervisor
  * @param {Product} product
@@ -96,6 +124,9 @@ export async function startProduct(supervisor, product) {
   }
   if (product.orcidStandIn !== undefined) {
     await supervisor.start(orcidService({ ...product, environment }));
+  }
+  if (product.repositoryStandIn !== undefined) {
+    await supervisor.start(repositoryService({ ...product, environment }));
   }
   await Promise.all([
     supervisor.start(workerService({ ...product, environment })),

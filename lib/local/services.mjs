@@ -74,6 +74,22 @@ export function orcidService({ bundleFolder, environment }) {
 }
 
 /** @returns {Service} */
+export function repositoryService({ bundleFolder, environment }) {
+  return {
+    name: 'repository',
+    command: process.execPath,
+    args: [
+      '--enable-source-maps',
+      path.join(root, bundleFolder, 'lib/local/repository-stand-in.js'),
+    ],
+    cwd: root,
+    env: environment,
+    isReady: () => answers(`${environment().REPOSITORY_URL}/health`),
+    stopMs: 3000,
+  };
+}
+
+/** @returns {Service} */
 export function workerService({ bundleFolder, environment }) {
   return {
     name: 'worker',

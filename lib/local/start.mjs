@@ -11,6 +11,7 @@ import { isAlive, waitUntil } from './process-run.mjs';
 import {
   chooseMail,
   chooseOrcidStandIn,
+  chooseRepositoryStandIn,
   readDemoSignIns,
   runScript,
   startProduct,
@@ -69,6 +70,7 @@ async function bringUp(supervisor, state) {
     address: process.env.NEXTAUTH_URL || `http://127.0.0.1:${port}`,
     mail: await chooseMail(port),
     orcidStandIn: await chooseOrcidStandIn(port, isDemoWanted),
+    repositoryStandIn: await chooseRepositoryStandIn(port, isDemoWanted),
     secrets: readSecrets(folder),
     isDevelopment,
   };

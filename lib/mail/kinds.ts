@@ -140,6 +140,39 @@ export const mailKinds = {
       why: 'You get this message because you gave the link.',
     }),
   }),
+  /** The deletion of a collaboration: asked for, taken back, or done. */
+  departure: kind({
+    schema: z.object({
+      collaboration: word,
+      who: word,
+      path,
+      what: z.enum(['asked', 'cancelled', 'deleted']),
+      dueAt: z.coerce.date(),
+    }),
+    preference: null,
+    compose: ({ collaboration, who, path: to, what, dueAt }) => {
+      if (what === 'deleted') {
+        return {
+          subject: `${collaboration} was deleted`,
+          sentence: `${collaboration} was deleted with everything in it, as ${who} had asked.`,
+          link: { label: 'Your other collaborations', path: to },
+          why: `You get this message because you were a member of ${collaboration}.`,
+        };
+      }
+      const isAsked = what === 'asked';
+      return {
+        subject: isAsked
+          ? `${collaboration} will be deleted on ${day.format(dueAt)}`
+          : `${collaboration} stays`,
+        sentence: isAsked
+          ? `${who} asked for ${collaboration} to be deleted, with everything in it, on ${time.format(dueAt)} (UTC).`
+          : `${who} took the deletion of ${collaboration} back: nothing changes.`,
+        link: { label: isAsked ? 'See what is there' : 'Go there', path: to },
+        notes: isAsked ? ['Until then any owner can take it back in the settings.'] : undefined,
+        why: `${member(collaboration)}.`,
+      };
+    },
+  }),
   'password-reset': kind({
     schema: z.object({ path, expiresAt: z.coerce.date() }),
     preference: null,

@@ -122,3 +122,20 @@ export function enqueueRecreation(
 ): Promise<string> {
   return insertJob(transaction, { ...asked, kind: 'recreate-run', surveyId: null, payload: {} });
 }
+
+/** Asks for a copy of a release in an open repository; the deposit's row names the job. */
+export function enqueueDeposit(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  return insertJob(transaction, { ...asked, kind: 'deposit-release', surveyId: null, payload: {} });
+}
+
+/** Asks for the collaboration as one archive; the export's row names the job. */
+export function enqueueExport(
+  transaction: Transaction,
+  asked: { collaborationId: string; requestedBy: string | null },
+): Promise<string> {
+  const kind = 'export-collaboration';
+  return insertJob(transaction, { ...asked, kind, surveyId: null, payload: {} });
+}

@@ -16,6 +16,10 @@ export const jobKinds = {
   'verify-release': z.object({}),
   /** The run that names this job, brought in with a bundle: its maps first. */
   'recreate-run': z.object({}),
+  /** The deposit that names this job: a published release on its way to an open repository. */
+  'deposit-release': z.object({}),
+  /** The export that names this job: the whole collaboration as one archive. */
+  'export-collaboration': z.object({}),
 } as const;
 
 export type JobKind = keyof typeof jobKinds;

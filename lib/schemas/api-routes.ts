@@ -19,10 +19,12 @@ import { type ApiRoute, listOf, route, team } from './api-route';
 import { auditPageSchema, auditQuerySchema } from './audit';
 import { candidateRoutes } from './candidate-routes';
 import { pageSchema, roleSchema } from './common';
+import { depositRoutes } from './deposit-routes';
 import { exampleRoutes } from './example-routes';
 import { exerciseRoutes } from './exercise-routes';
 import { exportRoutes } from './export-routes';
 import { jobSchema } from './jobs';
+import { leavingRoutes } from './leaving';
 import { surveyMapsSchema } from './map-states';
 import { overviewSchema } from './overview';
 import {
@@ -356,6 +358,8 @@ export const apiRoutes: readonly ApiRoute[] = [
   ...accountRoutes,
   ...surveys,
   ...releaseRoutes,
+  ...depositRoutes,
+  ...leavingRoutes,
   ...sampleRoutes,
   ...searchRoutes,
   ...analyses,

@@ -4,7 +4,15 @@ import { idSchema, moment } from './common';
 export const jobStatusSchema = z.enum(['waiting', 'running', 'done', 'failed', 'cancelled']);
 export const jobSchema = z.object({
   id: idSchema,
-  kind: z.enum(['compute-maps', 'compute-run', 'compute-study', 'verify-release', 'recreate-run']),
+  kind: z.enum([
+    'compute-maps',
+    'compute-run',
+    'compute-study',
+    'verify-release',
+    'recreate-run',
+    'deposit-release',
+    'export-collaboration',
+  ]),
   status: jobStatusSchema,
   stage: z.string(),
   done: z.number(),

@@ -57,6 +57,8 @@ export interface ReleasePage {
     byteLength: number;
     sha256: string;
   }[];
+  /** Its copy in an open repository; one for practice has an identifier that leads nowhere. */
+  deposit?: { doi: string; address: string | null; isPractice: boolean } | null;
   citation: { text: string; bibtex: string } | null;
   /** None where it was withdrawn. */
   runs: ShownRun[];

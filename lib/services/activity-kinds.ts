@@ -25,6 +25,7 @@ const newsOf: Record<ActivityKind, readonly string[]> = {
     'agree-release',
     'publish-release',
     'withdraw-release',
+    'deposit-release',
     'link-guest',
   ],
   people: [
@@ -37,6 +38,8 @@ const newsOf: Record<ActivityKind, readonly string[]> = {
     'revoke-invitation',
     'change-roles',
     'remove-member',
+    'suspend-member',
+    'resume-member',
   ],
 };
 
@@ -47,6 +50,8 @@ const guarded: Record<string, Action> = {
   'revoke-invitation': 'invite',
   'change-roles': 'change-roles',
   'remove-member': 'change-roles',
+  'suspend-member': 'change-roles',
+  'resume-member': 'change-roles',
   'change-settings': 'manage-collaboration',
   'link-guest': 'link-guest',
 };

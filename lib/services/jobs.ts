@@ -48,7 +48,8 @@ async function subjectsOf(
        coalesce(s.name, 'R-' || e.number, 'A-' || a.number || ', run ' || r.number, '') as subject,
        f.kind, e.number as release,
        s.slug, a.number as analysis, f.id as study_id
-     from job j left join survey s on s.id = j.survey_id left join release e on e.job_id = j.id
+     from job j left join survey s on s.id = j.survey_id left join deposit d on d.job_id = j.id
+       left join release e on e.job_id = j.id or e.id = d.release_id
        left join study f on f.job_id = j.id left join run r on r.job_id = j.id or r.id = f.run_id
        left join analysis a on a.id = r.analysis_id
      where j.id = any($1::uuid[])`,
@@ -133,6 +134,8 @@ async function demandControl(actor: Actor, job: JobRow): Promise<void> {
     return;
   }
   if (job.kind === 'verify-release') return demand(actor, 'agree-release');
+  if (job.kind === 'deposit-release') return demand(actor, 'deposit-release');
+  if (job.kind === 'export-collaboration') return demand(actor, 'manage-collaboration');
   const study =
     job.kind === 'compute-study'
       ? await StudyRow.findOne({ where: { jobId: job.id }, rejectOnEmpty: true })
@@ -151,6 +154,8 @@ const actionOf = {
   'compute-study': 'run-analysis',
   'verify-release': 'agree-release',
   'recreate-run': 'run-analysis',
+  'deposit-release': 'deposit-release',
+  'export-collaboration': 'export',
 } as const;
 
 /** Stops a job: a waiting one at once, a running one within seconds. */

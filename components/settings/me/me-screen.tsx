@@ -6,6 +6,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import type { SessionView } from '@/lib/schemas/account';
 import type { MailPreferences } from '@/lib/schemas/mail';
 import { MailSwitches } from './mail-switches';
+import { OwnData } from './own-data';
 import { PasswordForm } from './password-form';
 import { ProfileForm } from './profile-form';
 import { SessionList } from './session-list';
@@ -43,6 +44,10 @@ export function MeScreen({ name, email, sessions, mail, children }: MeScreenProp
           <SessionList initial={sessions} stamp={changes} />
         </section>
         {children}
+        <section className="min-w-0">
+          <SectionOpener title="Your data" />
+          <OwnData />
+        </section>
       </div>
     </>
   );

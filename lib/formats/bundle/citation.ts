@@ -10,6 +10,8 @@ export interface CitedRelease {
   /** SHA-256 of what is cited. */
   fingerprint: string;
   address: string;
+  /** Of its copy in an open repository. */
+  doi?: string;
 }
 
 const FINGERPRINT_LENGTH = 12;
@@ -30,7 +32,7 @@ export function citeAsText(cited: CitedRelease): string {
       ? `${names.slice(0, 3).join(', ')} and ${names.length - 3} others`
       : names.join(', ');
   const fingerprint = cited.fingerprint.slice(0, FINGERPRINT_LENGTH);
-  return `${who} (${cited.year}): ${cited.title}, ${cited.version}, fingerprint ${fingerprint}. ${cited.address}`;
+  return `${who} (${cited.year}): ${cited.title}, ${cited.version}, fingerprint ${fingerprint}. ${cited.address}${cited.doi === undefined ? '' : `, https://doi.org/${cited.doi}`}`;
 }
 
 /** The same as BibTeX; iDs of the authors stand in the note. */
@@ -45,6 +47,7 @@ export function citeAsBibtex(cited: CitedRelease): string {
     ['year', String(cited.year)],
     ['version', escapeTex(cited.version)],
     ['howpublished', `\\url{${cited.address}}`],
+    ...(cited.doi === undefined ? [] : [['doi', cited.doi] as [string, string]]),
     ['note', note],
   ];
   const lines = fields.map(([name, value]) => `  ${name} = {${value}}`);

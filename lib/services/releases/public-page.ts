@@ -17,8 +17,10 @@ import {
   RunRow,
   StudyRow,
 } from '@/models';
+import { findDeposit } from '../deposits/deposits';
 import { type FinishedRun, type ReleaseFacts, statedRange } from '../export-limits';
 import { writeMethods } from '../exports/methods';
+import { findTombstone } from '../leaving/tombstones';
 import { studyNames } from '../study-words';
 import { addressOfRelease } from './sign';
 
@@ -130,6 +132,7 @@ export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
   const { name } = await CollaborationRow.findByPk(row.collaborationId, { rejectOnEmpty: true });
   const key = `R-${row.number}`;
   const address = addressOfRelease(row.code);
+  const deposit = await findDeposit(row.id);
   const cited =
     row.publishedAt && runs.length > 0
       ? {
@@ -140,6 +143,7 @@ export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
           version: `release ${key}`,
           fingerprint: runs[0].resultDigest,
           address,
+          ...(deposit && !deposit.isPractice && { doi: deposit.doi }),
         }
       : null;
   return {
@@ -168,6 +172,7 @@ export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
       byteLength,
       sha256,
     })),
+    deposit,
     citation: cited && { text: citeAsText(cited), bibtex: citeAsBibtex(cited) },
     runs,
   };
@@ -205,6 +210,10 @@ export async function showFrozenRun(collaborationId: string, runId: string): Pro
 export async function findPublicRelease(code: string): Promise<ReleasePage> {
   database();
   const row = /^[a-z0-9]{10}$/.test(code) ? await ReleaseRow.findOne({ where: { code } }) : null;
+  if (!row) {
+    const tombstone = await findTombstone(code);
+    if (tombstone) return tombstone;
+  }
   if (!row?.publishedAt) throw new NotFound('release');
   return showRelease(row);
 }

@@ -38,6 +38,7 @@ const samples = {
   'release-published': item,
   'release-withdrawn': { ...item, reason: 'A <script> in the tables' },
   'guest-link-ending': { ...item, endsAt: new Date('2027-05-04T10:00:00Z') },
+  departure: { ...item, what: 'asked' as const, dueAt: new Date('2027-05-04T10:00:00Z') },
   'password-reset': { path: '/reset/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
   'sign-in-link': { path: '/sign-in/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
 };

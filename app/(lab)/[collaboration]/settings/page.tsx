@@ -3,6 +3,7 @@ import { currentActor } from '@/app/session';
 import { SettingsScreen } from '@/components/settings/settings-screen';
 import { may } from '@/lib/access/permissions';
 import { listAnalyses } from '@/lib/services/analyses';
+import { getLeaving } from '@/lib/services/leaving/exports';
 import { listFailedMessages } from '@/lib/services/mail';
 import { getSettings } from '@/lib/services/settings';
 
@@ -19,10 +20,11 @@ export default async function SettingsPage({
   params: Promise<{ collaboration: string }>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const [settings, { analyses }, failed] = await Promise.all([
+  const [settings, { analyses }, failed, leaving] = await Promise.all([
     getSettings(actor),
     listAnalyses(actor),
     may(actor, 'read-audit') ? listFailedMessages(actor) : null,
+    may(actor, 'manage-collaboration') ? getLeaving(actor) : null,
   ]);
   return (
     <SettingsScreen
@@ -31,6 +33,7 @@ export default async function SettingsPage({
       analyses={analyses.map(({ key, name }) => ({ key, name }))}
       zones={zonesWith(settings.timeZone)}
       failed={failed?.messages ?? null}
+      leaving={leaving}
     />
   );
 }

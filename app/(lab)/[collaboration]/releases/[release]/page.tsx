@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
 import { ReleaseScreen } from '@/components/releases/release-screen';
+import { getDeposit } from '@/lib/services/deposits/deposits';
 import { listGuestLinks } from '@/lib/services/releases/guest-links';
 import { addressOfRelease } from '@/lib/services/releases/sign';
 import { foundRelease } from '../found-release';
@@ -17,13 +18,17 @@ export default async function ReleasePage({ params }: PageProps) {
   const { collaboration, release: key } = await params;
   const actor = await currentActor(collaboration);
   const release = await foundRelease(actor, key);
-  const { links } = await listGuestLinks(actor);
+  const [{ links }, deposit] = await Promise.all([
+    listGuestLinks(actor),
+    getDeposit(actor, release.id),
+  ]);
   return (
     <ReleaseScreen
       key={release.id}
       collaboration={actor.collaboration}
       initial={release}
       links={links}
+      deposit={deposit}
       address={addressOfRelease(release.code)}
     />
   );
