@@ -4,7 +4,7 @@ import { type FormEvent, useState } from 'react';
 import { startSessionByLink } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
-import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
+import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 import { SecondFactorField } from './second-factor-field';
 
 /** Asks once, so that a program which follows links in mail uses none of them up. */

@@ -2,7 +2,7 @@
 
 import { useEffect, useRef } from 'react';
 import { TextField } from '@/components/ui/text-field';
-import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
+import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 
 interface SecondFactorFieldProps {
   value: string;

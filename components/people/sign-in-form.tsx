@@ -8,7 +8,7 @@ import { useSchemaForm } from '@/components/ui/form/use-schema-form';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';
-import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
+import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 import { SecondFactorField } from './second-factor-field';
 
 const loadSchema = async () => (await import('@/lib/schemas/people')).signInSchema;

@@ -11,7 +11,6 @@ import {
   takeTimeCode,
 } from '@/lib/access/second-factor';
 import { endSessions } from '@/lib/access/sessions';
-import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
 import { addressOfKey } from '@/lib/access/totp';
 import { Conflict, InputError, LabError } from '@/lib/errors';
 import {
@@ -20,6 +19,7 @@ import {
   type RecoveryCodes,
   type SecondFactorView,
 } from '@/lib/schemas/account-access';
+import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 import { inTransaction, PersonRow } from '@/models';
 import { recordAudit } from './audit';
 

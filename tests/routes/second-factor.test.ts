@@ -9,7 +9,7 @@ import { POST as renew } from '@/app/api/v1/me/second-factor/recovery-codes/rout
 import { POST as remove } from '@/app/api/v1/me/second-factor/remove/route';
 import { POST as begin, GET as read } from '@/app/api/v1/me/second-factor/route';
 import { makeLink } from '@/lib/access/account-links';
-import { CODE_IS_ASKED } from '@/lib/access/sign-in-words';
+import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 import { inTransaction } from '@/models';
 import { Browser, newAccount, PASSWORD, signedIn } from '../support/auth-browser';
 import { withDatabase } from '../support/database';
