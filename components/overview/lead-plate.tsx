@@ -39,7 +39,7 @@ export function LeadPlate({
       <div className="grid gap-x-12 gap-y-6 lg:grid-cols-[minmax(0,2fr)_minmax(0,3fr)]">
         <div>
           <p className="text-[14px] text-ink3">
-            Lead analysis, {lead.key}, run {run.number} of
+            Lead analysis, {lead.key}, run {run.number} of{' '}
             {moment(run.finishedAt ?? run.createdAt, 'day')}
             <HelpMark word="upper-limit" />
           </p>

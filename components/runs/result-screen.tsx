@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useMemo, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
@@ -14,13 +15,16 @@ import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
-import { NoRunPlate } from './no-run-plate';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
-import { RunEnded, RunProgress } from './run-progress';
 import { recipeOfRun } from './run-recipe';
 import { isFinished, isOnItsWay } from './run-standing';
-import { StoredResult } from './stored-result';
+
+/** Each analysis shows one of these, and a run on its way only some. */
+const NoRunPlate = dynamic(async () => (await import('./no-run-plate')).NoRunPlate);
+const StoredResult = dynamic(async () => (await import('./stored-result')).StoredResult);
+const RunEnded = dynamic(async () => (await import('./run-progress')).RunEnded);
+const RunProgress = dynamic(async () => (await import('./run-progress')).RunProgress);
 
 interface ResultScreenProps {
   collaboration: string;
@@ -193,6 +197,14 @@ function AnalysisState({
     case 'changed':
       return <StateMark kind="unsaved">Draft, changed since run {run?.number}</StateMark>;
     case 'run':
+      if (run?.frozen) {
+        const words = run.frozen === 'released' ? 'Released' : 'Frozen';
+        return (
+          <StateMark kind={run.frozen}>
+            {words}, run {run.number}
+          </StateMark>
+        );
+      }
       return <StateMark kind="draft">Draft, run {run?.number}, all changes saved</StateMark>;
     case 'draft':
       return <StateMark kind="draft">Draft, no run yet</StateMark>;

@@ -9,14 +9,7 @@ import type { DataColumn } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
 import { StateMark } from '@/components/ui/state-mark';
 import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
-
-/** "2015–2019", one year alone, or a dash. */
-export function observedYears(survey: Pick<SurveyView, 'observedFrom' | 'observedTo'>): string {
-  const { observedFrom: from, observedTo: to } = survey;
-  if (from === null && to === null) return '–';
-  if (from === null || to === null || from === to) return String(from ?? to);
-  return `${from}–${to}`;
-}
+import { observedYears } from './observed-years';
 
 function MapsState({ survey }: { survey: SurveyView }) {
   const { maps, mapJob } = survey;
@@ -44,7 +37,7 @@ function SurveyName({ collaboration, survey }: { collaboration: string; survey: 
         {survey.name}
       </Link>
       {survey.shared ? (
-        <span className="font-normal text-ink3">
+        <span className="font-normal text-ink3 max-md:hidden">
           {survey.shared.isWithdrawn ? 'withdrawn by' : 'by'} {survey.shared.owner}
         </span>
       ) : (
@@ -62,7 +55,7 @@ function SummedBar({ survey, most }: { survey: SurveyView; most: number }) {
         <ProbabilityBar
           value={survey.summedCompleteness / most}
           colour={seriesColour(survey.position)}
-          width={120}
+          width={64}
         />
       </span>
       {survey.summedCompleteness.toFixed(1)}
@@ -138,7 +131,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       id: 'sum',
       head: (
         <>
-          sum<span className={wide}> of detection probabilities</span>
+          sum<span className={wide}> of probabilities</span>
         </>
       ),
       name: 'sum of detection probabilities',
@@ -167,6 +160,9 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
   ];
 }
 
+/** Beside other things there is no room for these. */
+const ownPageOnly = new Set(['observed', 'lead']);
+
 interface SurveyTableProps {
   collaboration: string;
   list: SurveyList;
@@ -176,7 +172,10 @@ interface SurveyTableProps {
 
 /** Surveys with their sensitivity, and the total in which every star counts once. */
 export function SurveyTable({ collaboration, list, isWholePage = false }: SurveyTableProps) {
-  const columns = useMemo(() => columnsOf(collaboration, list), [collaboration, list]);
+  const columns = useMemo(() => {
+    const all = columnsOf(collaboration, list);
+    return isWholePage ? all : all.filter(({ id }) => !ownPageOnly.has(id));
+  }, [collaboration, list, isWholePage]);
   return (
     <DataTable
       caption="Surveys of the collaboration"
