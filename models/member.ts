@@ -16,6 +16,8 @@ export class MemberRow extends Model<
   declare collaborationId: string;
   declare personId: string;
   declare roles: string[];
+  /** Their access rests since then; what they made stays. */
+  declare suspendedAt: CreationOptional<Date | null>;
   declare createdAt: CreationOptional<Date>;
 }
 
@@ -26,6 +28,7 @@ export function defineMember(sequelize: Sequelize): void {
       collaborationId: DataTypes.UUID,
       personId: DataTypes.UUID,
       roles: DataTypes.ARRAY(DataTypes.TEXT),
+      suspendedAt: DataTypes.DATE,
       createdAt: DataTypes.DATE,
     },
     {

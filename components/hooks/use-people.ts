@@ -38,6 +38,14 @@ export function changeRoles(collaboration: string, memberId: string, roles: Role
   });
 }
 
+export function suspendMember(collaboration: string, memberId: string, isSuspended: boolean) {
+  return request(
+    apiPath(collaboration, 'members', memberId, 'suspension'),
+    answer('anyAnswerSchema'),
+    { method: 'POST', body: { isSuspended } },
+  );
+}
+
 export function removeMember(collaboration: string, memberId: string) {
   return requestNothing(apiPath(collaboration, 'members', memberId), { method: 'DELETE' });
 }

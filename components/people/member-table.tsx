@@ -2,7 +2,12 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { changeRoles, removeMember, useMembers } from '@/components/hooks/use-people';
+import {
+  changeRoles,
+  removeMember,
+  suspendMember,
+  useMembers,
+} from '@/components/hooks/use-people';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
@@ -47,6 +52,17 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
           >
             Save the roles
           </Button>
+          {member.can.suspend && (
+            <Button
+              onClick={() =>
+                void apply(() =>
+                  suspendMember(collaboration, member.id, member.suspendedAt === null),
+                )
+              }
+            >
+              {member.suspendedAt === null ? 'Suspend' : 'Let in again'}
+            </Button>
+          )}
           {member.can.remove && (
             <Button onClick={() => void apply(() => removeMember(collaboration, member.id))}>
               Remove from the collaboration
@@ -61,6 +77,13 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
         onChange={setRoles}
         offered={Object.keys(roleWords) as Role[]}
       />
+      {member.can.suspend && (
+        <p className="mt-4 text-ink3 text-note">
+          {member.suspendedAt === null
+            ? 'Suspending ends their access here at once; what they made stays, and they can be let in again.'
+            : 'Suspended: they cannot open this collaboration.'}
+        </p>
+      )}
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
     </Dialog>
   );
@@ -96,6 +119,9 @@ export function MemberTable({
             <Row key={member.id}>
               <Cell>
                 <span className="font-semibold">{member.person.name}</span>
+                {member.suspendedAt !== null && (
+                  <span className="ml-2 text-[13px] text-warn">suspended</span>
+                )}
                 <span className="block text-[13px] text-ink3">{member.person.email}</span>
                 <span className="block text-[13px] md:hidden">
                   {member.roles.map((role) => roleWords[role]).join(', ')}

@@ -42,8 +42,8 @@ export interface Actor {
 /**
  * The person as a member of a collaboration, with the roles of this moment.
  *
- * @throws NotFound for a collaboration that is absent, that the person is no member of, or that the
- *   token was not made for: the three are not told apart
+ * @throws NotFound for a collaboration that is absent, that the person is no member of, that
+ *   their access to rests, or that the token was not made for: these are not told apart
  */
 export async function actorIn(person: KnownPerson, slug: string): Promise<Actor> {
   if (!slugSchema.safeParse(slug).success) throw new NotFound('collaboration');
@@ -55,7 +55,7 @@ export async function actorIn(person: KnownPerson, slug: string): Promise<Actor>
   }>(
     `select c.id, c.slug, m.roles, c.archived_at is not null as "isArchived"
        from collaboration c join member m on m.collaboration_id = c.id
-      where c.slug = $1 and m.person_id = $2`,
+      where c.slug = $1 and m.person_id = $2 and m.suspended_at is null`,
     { bind: [slug, person.personId], type: QueryTypes.SELECT },
   );
   const found = rows[0];

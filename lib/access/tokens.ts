@@ -64,6 +64,7 @@ export async function findPersonOfToken(token: string): Promise<KnownPerson | nu
        from access_token t
        join person p on p.id = t.person_id
        join member m on m.person_id = t.person_id and m.collaboration_id = t.collaboration_id
+        and m.suspended_at is null
       where t.token_hash = $1 and t.revoked_at is null and t.expires_at > now()
         and p.suspended_at is null`,
     { bind: [hashToken(token)], type: QueryTypes.SELECT },

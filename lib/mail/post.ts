@@ -30,7 +30,8 @@ async function isStillFor({ personId, collaborationId }: ClaimedMessage): Promis
   if (personId === null) return true;
   const rows = await database().query(
     `select 1 from person p where p.id = $1 and p.suspended_at is null and ($2::uuid is null
-       or exists (select 1 from member m where m.person_id = p.id and m.collaboration_id = $2::uuid))`,
+       or exists (select 1 from member m where m.person_id = p.id and m.collaboration_id = $2::uuid
+         and m.suspended_at is null))`,
     { bind: [personId, collaborationId], type: QueryTypes.SELECT },
   );
   return rows.length > 0;

@@ -38,6 +38,7 @@ import {
   meSchema,
   newTokenSchema,
   signUpSchema,
+  suspensionSchema,
   tokenSchema,
 } from './people';
 import {
@@ -130,6 +131,10 @@ const people: ApiRoute[] = [
   }),
   route('patch', `${team}/members/{member}`, 'write', 'Change the roles of a member', {
     body: changeRolesSchema,
+    answer: memberSchema,
+  }),
+  route('post', `${team}/members/{member}/suspension`, 'write', 'Let the access of a member rest', {
+    body: suspensionSchema,
     answer: memberSchema,
   }),
   route('delete', `${team}/members/{member}`, 'write', 'Remove a member, or leave'),

@@ -29,6 +29,8 @@ export const createCollaborationSchema = z.strictObject({
 });
 export const rolesSchema = z.array(roleSchema).min(1, 'at least one role').max(5);
 export const inviteSchema = z.strictObject({ email: emailSchema, roles: rolesSchema });
+/** Whether a member's access to the collaboration rests; what they made stays. */
+export const suspensionSchema = z.strictObject({ isSuspended: z.boolean() });
 export const changeRolesSchema = z.strictObject({ roles: rolesSchema });
 export const scopeSchema = z.enum(['read', 'write', 'run']);
 export const createTokenSchema = z.strictObject({
@@ -51,7 +53,9 @@ export const memberSchema = z.object({
   roles: z.array(roleSchema),
   leads: z.array(z.string()),
   joinedAt: moment,
-  can: z.object({ changeRoles: z.boolean(), remove: z.boolean() }),
+  /** Their access rests since then. */
+  suspendedAt: moment.nullable(),
+  can: z.object({ changeRoles: z.boolean(), remove: z.boolean(), suspend: z.boolean() }),
 });
 export type MemberView = z.infer<typeof memberSchema>;
 

@@ -34,7 +34,7 @@ async function checkMentions(
   if (wanted.length === 0) return [];
   const people = await database().query<{ id: string; name: string }>(
     `select p.id, p.name from member m join person p on p.id = m.person_id
-     where m.collaboration_id = $1 and p.id = any($2::uuid[])`,
+     where m.collaboration_id = $1 and m.suspended_at is null and p.id = any($2::uuid[])`,
     { bind: [actor.collaborationId, wanted], type: QueryTypes.SELECT, transaction },
   );
   if (people.length < wanted.length) {

@@ -31,7 +31,7 @@ async function findRow(id: string, transaction?: Transaction): Promise<Collabora
 async function countSigners(collaborationId: string, transaction?: Transaction): Promise<number> {
   const [{ count }] = await database().query<{ count: number }>(
     `select count(*)::int as count from member
-     where collaboration_id = $1 and roles && array['author', 'owner']`,
+     where collaboration_id = $1 and suspended_at is null and roles && array['author', 'owner']`,
     { bind: [collaborationId], type: QueryTypes.SELECT, transaction },
   );
   return count;

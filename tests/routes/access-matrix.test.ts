@@ -9,6 +9,9 @@ const { GET: getOne, PATCH: rename } = await import(
 );
 const members = await import('@/app/api/v1/collaborations/[collaboration]/members/route');
 const member = await import('@/app/api/v1/collaborations/[collaboration]/members/[member]/route');
+const suspension = await import(
+  '@/app/api/v1/collaborations/[collaboration]/members/[member]/suspension/route'
+);
 const invitations = await import('@/app/api/v1/collaborations/[collaboration]/invitations/route');
 const invitation = await import(
   '@/app/api/v1/collaborations/[collaboration]/invitations/[invitation]/route'
@@ -109,6 +112,18 @@ const cells: Cell[] = [
     prepare: async (team) => ({
       params: { member: await newMember(team) },
       body: { roles: ['author'] },
+    }),
+  },
+  {
+    name: 'suspension of a member',
+    handler: suspension.POST,
+    method: 'POST',
+    action: 'change-roles',
+    scope: 'write',
+    success: 200,
+    prepare: async (team) => ({
+      params: { member: await newMember(team) },
+      body: { isSuspended: true },
     }),
   },
   {

@@ -137,8 +137,8 @@ describe('GET …/members', () => {
     const of = (role: 'owner' | 'student' | 'collaborator') =>
       members.find(({ id }) => id === team.memberIds[role]);
     expect(of('collaborator')).toMatchObject({ roles: ['collaborator'], leads: ['Heron North'] });
-    expect(of('owner')?.can).toEqual({ changeRoles: true, remove: false });
-    expect(of('student')?.can).toEqual({ changeRoles: true, remove: true });
+    expect(of('owner')?.can).toEqual({ changeRoles: true, remove: false, suspend: false });
+    expect(of('student')?.can).toEqual({ changeRoles: true, remove: true, suspend: true });
   });
 
   it('offers a student nothing but to leave', async () => {
@@ -146,7 +146,11 @@ describe('GET …/members', () => {
     const headers = bearer(await tokenOf(team.people.student, team.collaboration));
     const answer = await (await call(listMembers, { params: team.params, headers })).json();
     for (const { person, can } of answer.members) {
-      expect(can).toEqual({ changeRoles: false, remove: person.id === team.people.student.id });
+      expect(can).toEqual({
+        changeRoles: false,
+        remove: person.id === team.people.student.id,
+        suspend: false,
+      });
     }
   });
 });

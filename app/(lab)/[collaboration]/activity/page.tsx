@@ -3,7 +3,7 @@ import { currentActor } from '@/app/session';
 import { ActivityScreen } from '@/components/activity/activity-screen';
 import { activityQuerySchema } from '@/lib/schemas/activity';
 import { listActivity } from '@/lib/services/activity';
-import { listMembers } from '@/lib/services/people';
+import { listMembers } from '@/lib/services/members';
 
 export const metadata: Metadata = { title: 'Activity' };
 

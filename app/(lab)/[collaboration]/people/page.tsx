@@ -7,7 +7,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { may } from '@/lib/access/permissions';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import { listInvitations } from '@/lib/services/invitations';
-import { listMembers } from '@/lib/services/people';
+import { listMembers } from '@/lib/services/members';
 
 export const metadata: Metadata = { title: 'People' };
 

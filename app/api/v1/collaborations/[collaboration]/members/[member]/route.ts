@@ -1,6 +1,6 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
 import { changeRolesSchema } from '@/lib/schemas/people';
-import { changeRoles, removeMember } from '@/lib/services/people';
+import { changeRoles, removeMember } from '@/lib/services/members';
 
 export const PATCH = collaborationRoute(
   { scope: 'write', body: changeRolesSchema },
