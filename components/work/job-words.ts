@@ -2,7 +2,9 @@ import type { JobView } from '@/lib/schemas/jobs';
 
 /** "Maps of CURLEW", "A-31, run 18". */
 export function jobTitle({ kind, subject }: Pick<JobView, 'kind' | 'subject'>): string {
+  if (kind === 'export-collaboration') return 'An archive of the collaboration';
   if (subject === '') return kind === 'compute-maps' ? 'Maps' : 'A computation';
+  if (kind === 'deposit-release') return `${subject} to the open repository`;
   return kind === 'compute-maps' ? `Maps of ${subject}` : subject;
 }
 

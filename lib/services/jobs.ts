@@ -81,7 +81,7 @@ export async function describeJobs(jobs: JobRow[]): Promise<JobView[]> {
     cancelRequested: job.cancelRequestedAt !== null && job.status === 'running',
     fault: job.fault,
     subject: subjects.get(job.id)?.words ?? '',
-    page: subjects.get(job.id)?.page ?? null,
+    page: job.kind === 'export-collaboration' ? 'settings' : (subjects.get(job.id)?.page ?? null),
     createdAt: job.createdAt.toISOString(),
     startedAt: job.startedAt?.toISOString() ?? null,
     finishedAt: job.finishedAt?.toISOString() ?? null,

@@ -159,6 +159,7 @@ describe('a repository that is not at its best', () => {
   it('gets a file again whose connection was cut in the middle, or that arrived damaged', async () => {
     const { release, jobId } = await sent();
     standIn.faults.push(
+      { at: 'upload', kind: 'busy', retryAfterS: 1 },
       { at: 'upload', kind: 'damage' },
       { at: 'upload', kind: 'cut', afterBytes: 5 },
       { at: 'upload', kind: 'no-answer' },

@@ -83,7 +83,7 @@ async function readAnswer(response: IncomingMessage): Promise<unknown> {
 /** One request over one connection, whose body is streamed. */
 async function askOnce(asked: Asked, { url, token, signal }: ExchangeOptions): Promise<Answered> {
   const address = new URL(`${url}${asked.path}`);
-  const body = asked.json === undefined ? undefined : Buffer.from(JSON.stringify(asked.json));
+  const json = asked.json === undefined ? undefined : Buffer.from(JSON.stringify(asked.json));
   const ask = address.protocol === 'https:' ? askSecure : askPlain;
   const request = ask(address, {
     method: asked.method,
@@ -92,7 +92,7 @@ async function askOnce(asked: Asked, { url, token, signal }: ExchangeOptions): P
     headers: {
       accept: 'application/json',
       authorization: `Bearer ${token}`,
-      ...(body && { 'content-type': 'application/json', 'content-length': body.length }),
+      ...(json && { 'content-type': 'application/json', 'content-length': json.length }),
       ...asked.content?.headers,
       ...(asked.content && { 'content-length': asked.content.byteLength }),
     },
@@ -104,11 +104,14 @@ async function askOnce(asked: Asked, { url, token, signal }: ExchangeOptions): P
   });
   const sent = asked.content
     ? pipeline(asked.content.open(), request)
-    : new Promise<void>((resolve) => request.end(body, () => resolve()));
+    : new Promise<void>((resolve) => request.end(json, () => resolve()));
   // An answer may come before everything is sent, and a refused upload ends the sending.
   sent.catch(() => undefined);
   const response = await answer;
-  return readStatus(asked, response, await readAnswer(response));
+  const body = await readAnswer(response);
+  // Refused before all of it was sent: nobody takes the rest.
+  if (!request.writableFinished) request.destroy();
+  return readStatus(asked, response, body);
 }
 
 function readStatus(asked: Asked, response: IncomingMessage, body: unknown): Answered {

@@ -24,7 +24,7 @@ async function ownedAlone(personId: string, transaction: Transaction): Promise<s
     `select c.name from member m join collaboration c on c.id = m.collaboration_id
      where m.person_id = $1 and 'owner' = any(m.roles) and not exists (
        select 1 from member o where o.collaboration_id = m.collaboration_id
-         and o.person_id <> $1 and 'owner' = any(o.roles))
+         and o.person_id <> $1 and 'owner' = any(o.roles) and o.suspended_at is null)
      order by c.name`,
     { bind: [personId], type: QueryTypes.SELECT, transaction },
   );
@@ -38,6 +38,7 @@ const removed = [
   'delete from second_factor where person_id = $1',
   'delete from mail_preference where person_id = $1',
   'delete from outbox_message where person_id = $1',
+  'delete from idempotency_key where person_id = $1',
 ];
 
 async function leaveEverywhere(person: KnownPerson, transaction: Transaction): Promise<void> {
