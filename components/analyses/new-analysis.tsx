@@ -5,13 +5,13 @@ import { useMemo, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
+import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { useCompanionsOf } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { TextField } from '@/components/ui/text-field';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { analysisRecipeSchema } from '@/lib/schemas/analyses';
 import type { CombinationView } from '@/lib/schemas/combinations';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation } from '@/lib/schemas/populations';
@@ -42,6 +42,8 @@ interface NewAnalysisProps {
   /** What the settings of the collaboration say that new analyses begin with. */
   usual: Pick<AnalysisRecipe, 'credibleLevel' | 'combination'>;
 }
+
+const loadSchema = async () => (await import('@/lib/schemas/analyses')).analysisRecipeSchema;
 
 const FIRST_RATE: Omit<RateSetting, 'credibleLevel'> = {
   likelihood: 'host-fraction',
@@ -100,11 +102,11 @@ export function NewAnalysis(props: NewAnalysisProps) {
     ...(stored && isSameCombination(stored, chosen, combination) && { combinationId: stored.id }),
     ...(candidates && detections === 'counted' && { candidates }),
   };
-  const checked = analysisRecipeSchema.safeParse(recipe);
-  const fault = faultWords(checked.success ? undefined : checked.error.issues[0], name);
+  const checked = useSchema(loadSchema)?.safeParse(recipe);
+  const fault = checked ? faultWords(checked.error?.issues[0], name) : CHECKS_COME;
 
   const create = async (andRun: boolean) => {
-    if (!checked.success) return;
+    if (!checked?.success) return;
     setBusy(andRun ? 'run' : 'create');
     setProblem(undefined);
     try {
@@ -187,7 +189,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
             setting={
               sampleId === undefined &&
               stored === undefined &&
-              checked.success &&
+              checked?.success &&
               population &&
               isPlainPowerLaw(population.definition)
                 ? { ...recipe, definition: population.definition }

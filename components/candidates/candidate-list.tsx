@@ -11,13 +11,8 @@ import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain } from '@/lib/quantities/display';
-import {
-  type CandidateList,
-  type CandidateView,
-  type CompanionStatus,
-  companionStatusSchema,
-} from '@/lib/schemas/candidates';
-import { statusMarks, statusWords } from './status-words';
+import type { CandidateList, CandidateView, CompanionStatus } from '@/lib/schemas/candidates';
+import { readStatus, statuses, statusMarks, statusWords } from './status-words';
 import { withErrors } from './verdict-history';
 
 interface CandidateListPanelProps {
@@ -131,13 +126,10 @@ export function CandidateListPanel(props: CandidateListPanelProps) {
         <SelectField
           label="Status"
           value={filter.status ?? ''}
-          onChange={({ target }) => {
-            const status = companionStatusSchema.safeParse(target.value);
-            setFilter({ ...filter, status: status.success ? status.data : undefined });
-          }}
+          onChange={({ target }) => setFilter({ ...filter, status: readStatus(target.value) })}
           options={[
             { value: '', label: `all, ${total}` },
-            ...companionStatusSchema.options.map((status) => ({
+            ...statuses.map((status) => ({
               value: status,
               label: `${statusWords[status]}, ${list.counts[status]}`,
             })),

@@ -9,6 +9,11 @@ export const statusWords: Record<CompanionStatus, string> = {
   background: 'background',
 };
 
+export const statuses = Object.keys(statusWords) as CompanionStatus[];
+
+/** Undefined for anything that is no status. */
+export const readStatus = (value: unknown) => statuses.find((status) => status === value);
+
 export const statusMarks: Record<CompanionStatus, StateKind> = {
   confirmed: 'ok',
   candidate: 'warn',

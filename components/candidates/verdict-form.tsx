@@ -9,14 +9,9 @@ import { Notice } from '@/components/ui/notice';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
-import {
-  type CandidateDetail,
-  type CompanionStatus,
-  companionStatusSchema,
-  type giveVerdictSchema,
-} from '@/lib/schemas/candidates';
+import type { CandidateDetail, CompanionStatus, giveVerdictSchema } from '@/lib/schemas/candidates';
 import { numberOf } from './form-values';
-import { statusWords } from './status-words';
+import { readStatus, statuses, statusWords } from './status-words';
 
 type VerdictInput = z.input<typeof giveVerdictSchema>;
 
@@ -40,7 +35,8 @@ function choiceOf<Measured extends string>(form: FormData, name: string, measure
 
 /** What the fields say, as the server takes it. */
 export function readVerdict(form: FormData, isProposal: boolean): VerdictInput {
-  const status = companionStatusSchema.parse(form.get('status'));
+  const status = readStatus(form.get('status'));
+  if (status === undefined) throw new RangeError('No status is chosen');
   return {
     status,
     probability: numberOf(form, 'probability'),
@@ -124,8 +120,8 @@ export function VerdictForm({ collaboration, candidate, onGiven }: VerdictFormPr
           label="It is"
           name="status"
           value={status}
-          onChange={(event) => setStatus(companionStatusSchema.parse(event.target.value))}
-          options={companionStatusSchema.options.map((value) => ({
+          onChange={(event) => setStatus(readStatus(event.target.value) ?? status)}
+          options={statuses.map((value) => ({
             value,
             label: statusWords[value],
           }))}

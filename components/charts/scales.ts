@@ -10,6 +10,9 @@ export interface Scale {
   clamp(isClamped: boolean): Scale;
 }
 
+/** Lower and upper end, or the other way round. */
+type Ends = readonly number[];
+
 interface Warp {
   to(value: number): number;
   back(warped: number): number;
@@ -26,36 +29,25 @@ function shareOf(from: number, to: number, at: number): number {
 const between = (from: number, to: number, share: number) => from * (1 - share) + to * share;
 const within = (share: number) => Math.min(1, Math.max(0, share));
 
-function scaleOf(
-  warp: Warp,
-  domain: readonly [number, number],
-  range: readonly [number, number],
-  isClamped = false,
-): Scale {
+function scaleOf(warp: Warp, domain: Ends, range: Ends, isClamped = false): Scale {
   const [low, high] = [warp.to(domain[0]), warp.to(domain[1])];
   const kept = isClamped ? within : (share: number) => share;
   const place = (value: number) =>
     between(range[0], range[1], kept(shareOf(low, high, warp.to(value))));
   return Object.assign(place, {
     invert: (px: number) => warp.back(between(low, high, kept(shareOf(range[0], range[1], px)))),
-    domain: (): [number, number] => [...domain],
-    range: (): [number, number] => [...range],
+    domain: (): [number, number] => [domain[0], domain[1]],
+    range: (): [number, number] => [range[0], range[1]],
     clamp: (asked: boolean) => scaleOf(warp, domain, range, asked),
   });
 }
 
 /** A straight axis: two numbers to two places, without the formats and colours of a library. */
-export function scaleLinear(
-  domain: readonly [number, number],
-  range: readonly [number, number],
-): Scale {
+export function scaleLinear(domain: Ends, range: Ends): Scale {
   return scaleOf(straight, domain, range);
 }
 
 /** A logarithmic axis; both ends of the domain are above zero. */
-export function scaleLog(
-  domain: readonly [number, number],
-  range: readonly [number, number],
-): Scale {
+export function scaleLog(domain: Ends, range: Ends): Scale {
   return scaleOf(logarithmic, domain, range);
 }

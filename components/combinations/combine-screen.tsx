@@ -7,6 +7,7 @@ import {
   useCombinationPreview,
   useCombinations,
 } from '@/components/hooks/use-combinations';
+import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { Button } from '@/components/ui/button';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -16,17 +17,20 @@ import { SelectField } from '@/components/ui/select-field';
 import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
 import { ruleNames } from '@/lib/schemas/combination-words';
-import {
-  type CombinationDefinition,
-  type CombinationView,
-  combinationDefinitionSchema,
-  combinationRuleSchema,
+import type {
+  CombinationDefinition,
+  CombinationRule,
+  CombinationView,
 } from '@/lib/schemas/combinations';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import { CombinationReport } from './combination-report';
 import { CombinationTable } from './combination-table';
 import { OrderChoice } from './order-choice';
 import { OverlapTable } from './overlap-table';
+
+const loadSchema = async () =>
+  (await import('@/lib/schemas/combinations')).combinationDefinitionSchema;
+const rules = Object.keys(ruleNames) as CombinationRule[];
 
 interface CombineScreenProps {
   collaboration: string;
@@ -56,17 +60,19 @@ export function CombineScreen({
   const [name, setName] = useState('');
   const [busy, setBusy] = useState<'new' | 'version'>();
   const [problem, setProblem] = useState<string>();
-  const checked = combinationDefinitionSchema.safeParse(draft);
-  const definition = checked.success ? checked.data : undefined;
+  const checked = useSchema(loadSchema)?.safeParse(draft);
+  const definition = checked?.data;
   const { data: preview, error, isLoading } = useCombinationPreview(collaboration, definition);
   const change = (part: Partial<CombinationDefinition>) => setDraft({ ...draft, ...part });
-  const fault = checked.error
-    ? `${checked.error.issues[0].message}.`
-    : name.trim() === ''
-      ? 'Give it a name first.'
-      : canCombine
-        ? undefined
-        : 'A statistician, a collaborator or an owner saves combinations.';
+  const fault = !checked
+    ? CHECKS_COME
+    : checked.error
+      ? `${checked.error.issues[0].message}.`
+      : name.trim() === ''
+        ? 'Give it a name first.'
+        : canCombine
+          ? undefined
+          : 'A statistician, a collaborator or an owner saves combinations.';
 
   const show = (combination: CombinationView) => {
     setOpen(combination);
@@ -115,10 +121,10 @@ export function CombineScreen({
               label="A star in several surveys"
               value={draft.rule}
               onChange={(event) => {
-                const rule = combinationRuleSchema.parse(event.target.value);
+                const rule = rules.find((one) => one === event.target.value) ?? draft.rule;
                 change({ rule, ...(rule === 'refuse' && { starRules: [] }) });
               }}
-              options={combinationRuleSchema.options.map((rule) => ({
+              options={rules.map((rule) => ({
                 value: rule,
                 label: ruleNames[rule],
               }))}

@@ -4,11 +4,10 @@ import { useState } from 'react';
 import { SelectField } from '@/components/ui/select-field';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
-import {
-  type CombinationDefinition,
-  type CombinationPreview,
-  type StarRule,
-  starRuleSchema,
+import type {
+  CombinationDefinition,
+  CombinationPreview,
+  StarRule,
 } from '@/lib/schemas/combinations';
 
 interface OverlapTableProps {
@@ -26,6 +25,7 @@ export const starRuleNames: Record<StarRule, string> = {
   deepest: 'deepest map',
   independent: 'independent epochs',
 };
+const rules = Object.keys(starRuleNames) as StarRule[];
 
 /** The stars that several of the surveys list, each with its rule. */
 export function OverlapTable({ preview, starRules, isFixed, onChange }: OverlapTableProps) {
@@ -37,8 +37,8 @@ export function OverlapTable({ preview, starRules, isFixed, onChange }: OverlapT
   const nameOf = new Map(surveys.map(({ id, name }) => [id, name]));
   const set = (starId: string, rule: string) => {
     const others = starRules.filter((star) => star.starId !== starId);
-    const parsed = starRuleSchema.safeParse(rule);
-    onChange(parsed.success ? [...others, { starId, rule: parsed.data }] : others);
+    const chosen = rules.find((one) => one === rule);
+    onChange(chosen ? [...others, { starId, rule: chosen }] : others);
   };
   const ruleWords = (rule: StarRule) => starRuleNames[rule];
   return (
@@ -74,7 +74,7 @@ export function OverlapTable({ preview, starRules, isFixed, onChange }: OverlapT
                           value: '',
                           label: own ? 'as the rest' : `as the rest: ${ruleWords(star.rule)}`,
                         },
-                        ...starRuleSchema.options.map((rule) => ({
+                        ...rules.map((rule) => ({
                           value: rule,
                           label: ruleWords(rule),
                           isDisabled: rule === 'same-position' && !star.canSamePosition,

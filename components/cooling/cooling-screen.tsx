@@ -8,7 +8,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
-import { type CoolingRelationView, startConditionSchema } from '@/lib/schemas/cooling';
+import type { CoolingRelationView, StartCondition } from '@/lib/schemas/cooling';
 import type { CoolingTableView } from '@/lib/schemas/surveys';
 import { CoolingList } from './cooling-list';
 import { differenceOf, sharedBands, tracksOf } from './tracks';
@@ -122,6 +122,8 @@ export function CoolingScreen({ collaboration, tables, canName }: CoolingScreenP
   );
 }
 
+const starts: StartCondition[] = ['hot', 'warm', 'cold', 'unstated'];
+
 interface StartFieldProps {
   collaboration: string;
   relation: CoolingRelationView;
@@ -133,7 +135,8 @@ function StartField({ collaboration, relation, onNamed }: StartFieldProps) {
   const name = async (value: string) => {
     setRefusal(undefined);
     try {
-      onNamed(await nameStart(collaboration, relation.id, startConditionSchema.parse(value)));
+      const start = starts.find((one) => one === value) ?? relation.startCondition;
+      onNamed(await nameStart(collaboration, relation.id, start));
     } catch (reason) {
       setRefusal(sentenceOf(reason));
     }
@@ -144,7 +147,7 @@ function StartField({ collaboration, relation, onNamed }: StartFieldProps) {
       value={relation.startCondition}
       error={refusal}
       onChange={(event) => void name(event.target.value)}
-      options={startConditionSchema.options.map((value) => ({ value, label: value }))}
+      options={starts.map((value) => ({ value, label: value }))}
     />
   );
 }

@@ -1,5 +1,6 @@
 import { formatDay } from '@/components/runs/time-words';
-import { type ExerciseView, partNames } from '@/lib/schemas/exercises';
+import { partNames } from '@/lib/schemas/exercise-parts';
+import type { ExerciseView } from '@/lib/schemas/exercises';
 
 /** "due on 3 March 2026", "was due on …", "no last day". */
 export function dueWords({ dueOn, isOpen }: Pick<ExerciseView, 'dueOn' | 'isOpen'>): string {

@@ -1,9 +1,8 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { useForm } from 'react-hook-form';
+import { type Resolver, useForm } from 'react-hook-form';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createExercise } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
@@ -14,12 +13,17 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import {
-  type CreateExercise,
-  changeableParts,
-  createExerciseSchema,
-  partNames,
-} from '@/lib/schemas/exercises';
+import { changeableParts, partNames } from '@/lib/schemas/exercise-parts';
+import type { CreateExercise } from '@/lib/schemas/exercises';
+
+/** The schema comes with the first check: the form is drawn without it. */
+const resolver: Resolver<CreateExercise> = async (...asked) => {
+  const [{ zodResolver }, { createExerciseSchema }] = await Promise.all([
+    import('@hookform/resolvers/zod'),
+    import('@/lib/schemas/exercises'),
+  ]);
+  return zodResolver(createExerciseSchema)(...asked);
+};
 
 /** A finished run that an exercise may be held against. */
 export interface RunChoice {
@@ -32,7 +36,7 @@ export function NewExercise({ collaboration, runs }: { collaboration: string; ru
   const router = useRouter();
   const [problem, setProblem] = useState<string>();
   const { register, handleSubmit, formState } = useForm<CreateExercise>({
-    resolver: zodResolver(createExerciseSchema),
+    resolver,
     defaultValues: {
       title: '',
       task: '',

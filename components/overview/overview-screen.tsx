@@ -1,9 +1,8 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import Link from 'next/link';
-import { AnalysisTable } from '@/components/analyses/analysis-table';
 import { useOverview } from '@/components/hooks/use-overview';
-import { SurveyTable } from '@/components/surveys/survey-table';
 import { EmptyState } from '@/components/ui/empty-state';
 import { Icon } from '@/components/ui/icon';
 import { LinkButton } from '@/components/ui/link-button';
@@ -14,7 +13,15 @@ import type { FirstStep } from '@/lib/schemas/first-steps';
 import type { Overview } from '@/lib/schemas/overview';
 import { ExampleFiles, FirstSteps } from './first-steps';
 import { LeadPlate } from './lead-plate';
-import { OverlapChart } from './overlap-chart';
+
+/** Drawn by the server; what makes them live comes after the rest of the page. */
+const AnalysisTable = dynamic(
+  async () => (await import('@/components/analyses/analysis-table')).AnalysisTable,
+);
+const SurveyTable = dynamic(
+  async () => (await import('@/components/surveys/survey-table')).SurveyTable,
+);
+const OverlapChart = dynamic(async () => (await import('./overlap-chart')).OverlapChart);
 
 function Waiting({ waiting }: { waiting: Overview['waiting'] }) {
   if (waiting.length === 0) return <p className="py-2 text-ink3">Nothing waits for a person.</p>;

@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { type ReactNode, useDeferredValue, useMemo, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { orNull } from '@/components/runs/live-answer';
@@ -11,7 +12,6 @@ import { StateMark } from '@/components/ui/state-mark';
 import { needsHostMass } from '@/lib/population';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
-import { AgainstVersion } from './against-version';
 import { BuilderControls } from './builder-controls';
 import type { PopulationBuilderProps } from './builder-props';
 import { type BuilderSetting, builderToQuery, defaultSetting } from './builder-setting';
@@ -19,13 +19,27 @@ import { InWords } from './in-words';
 import { faultOf, isSameLaw, type LawDefinition } from './law-parts';
 import { hasIndexPlane } from './limit-plane';
 import { orbitWords } from './orbit-words';
-import { PlaneSection } from './plane-section';
 import { PopulationAlone } from './population-alone';
-import { PopulationPreview } from './population-preview';
 import { SavePopulation } from './save-population';
 import { spreadOf } from './spread';
 import { type Preview, usePreview } from './use-preview';
 import { VersionList } from './version-list';
+
+/** These wait for the maps of a run, or stand below what does. */
+const PopulationPreview = dynamic(
+  async () => (await import('./population-preview')).PopulationPreview,
+  { loading: PreviewWaits },
+);
+const PlaneSection = dynamic(async () => (await import('./plane-section')).PlaneSection);
+const AgainstVersion = dynamic(async () => (await import('./against-version')).AgainstVersion);
+
+function PreviewWaits() {
+  return (
+    <p className="text-ink3 text-note" role="status">
+      Drawing what the surveys would see.
+    </p>
+  );
+}
 
 interface LawBuilderProps extends PopulationBuilderProps {
   start: LawDefinition;

@@ -1,13 +1,15 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useState } from 'react';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { PageTitle } from '@/components/ui/page-title';
 import type { PopulationBuilderProps } from './builder-props';
 import { FIRST_DEFINITION } from './builder-setting';
 import { LawBuilder } from './law-builder';
-import { SystemsScreen } from './systems-screen';
-import { SystemsUpload } from './systems-upload';
+
+const SystemsScreen = dynamic(async () => (await import('./systems-screen')).SystemsScreen);
+const SystemsUpload = dynamic(async () => (await import('./systems-upload')).SystemsUpload);
 
 /** A population of any form: laws under their controls, systems as their table has them. */
 export function PopulationBuilder(props: PopulationBuilderProps) {

@@ -2,7 +2,7 @@
 
 import { TextAction } from '@/components/ui/text-action';
 import { TextField } from '@/components/ui/text-field';
-import { readOrcid } from '@/lib/schemas/orcid';
+import { readOrcid } from '@/lib/schemas/orcid-number';
 import type { Author } from '@/lib/schemas/releases';
 
 /** What is wrong with an iD, while it is written. */

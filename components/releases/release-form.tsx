@@ -12,7 +12,8 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
-import { type Author, createReleaseSchema, licences } from '@/lib/schemas/releases';
+import { licences } from '@/lib/schemas/licences';
+import type { Author } from '@/lib/schemas/releases';
 import { AuthorFields } from './author-fields';
 
 /** A frozen run that may be part of a release. */
@@ -65,6 +66,7 @@ export function ReleaseForm(props: ReleaseFormProps) {
         ...(affiliation?.trim() && { affiliation }),
         ...(orcid?.trim() && { orcid }),
       }));
+    const { createReleaseSchema } = await import('@/lib/schemas/releases');
     const parsed = createReleaseSchema.safeParse({ ...draft, authors });
     if (!parsed.success) {
       const [issue] = parsed.error.issues;

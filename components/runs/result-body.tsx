@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { type ReactNode, useCallback, useDeferredValue, useMemo, useRef, useState } from 'react';
 import { PosteriorChart, type PosteriorView } from '@/components/charts/posterior-chart';
 import { FigureFrame } from '@/components/figures/figure-frame';
@@ -8,8 +9,6 @@ import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { documentOfShown } from '@/components/statement/document-of-shown';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
-import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
-import { FurtherQuestions } from '@/components/studies/further-questions';
 import { FoldSection } from '@/components/ui/fold-section';
 import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
@@ -25,7 +24,6 @@ import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
 import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
 import { ResultConsole } from './result-console';
-import { ResultSections } from './result-sections';
 import { conditionRows, ResultStatement } from './result-statement';
 import { runFigures } from './run-figures';
 import { type ShownResult, showResult } from './shown-result';
@@ -33,6 +31,15 @@ import { useAnnounced } from './use-announced';
 import { useLiveResult } from './use-live-result';
 import { useLiveTask } from './use-live-task';
 import { useMapFigures } from './use-map-figures';
+
+/** Below the number and its controls: drawn by the server, made live after them. */
+const CalibrationCheck = dynamic(
+  async () => (await import('@/components/studies/calibration/calibration-check')).CalibrationCheck,
+);
+const ResultSections = dynamic(async () => (await import('./result-sections')).ResultSections);
+const FurtherQuestions = dynamic(
+  async () => (await import('@/components/studies/further-questions')).FurtherQuestions,
+);
 
 interface ResultBodyProps {
   collaboration: string;

@@ -1,4 +1,5 @@
-import { type SampleDefinition, sampleDefinitionSchema } from '@/lib/schemas/samples';
+import type { ZodType } from 'zod';
+import type { SampleDefinition } from '@/lib/schemas/samples';
 
 const ranges = ['ageMyr', 'distancePc', 'hostMassMsun'] as const;
 export type RangeName = (typeof ranges)[number];
@@ -55,7 +56,7 @@ export type ReadDraft =
   | { definition: SampleDefinition; faults?: undefined }
   | { definition?: undefined; faults: Partial<Record<string, string>> };
 
-export function readDraft(draft: SampleDraft): ReadDraft {
+export function readDraft(draft: SampleDraft, schema: ZodType<SampleDefinition>): ReadDraft {
   const { surveyIds, typeFrom, typeTo, movingGroups, multiplicity } = draft;
   const { knownCompanion, unknown } = draft;
   const number = (text: string) => (text.trim() === '' ? undefined : Number(text));
@@ -66,7 +67,7 @@ export function readDraft(draft: SampleDraft): ReadDraft {
   });
   const from = typeFrom || typeTo;
   const to = typeTo || typeFrom;
-  const parsed = sampleDefinitionSchema.safeParse({
+  const parsed = schema.safeParse({
     ...(surveyIds.length > 0 && { surveyIds }),
     ...(from !== '' && { spectralType: { from, to } }),
     ...Object.fromEntries(rangeParts),

@@ -4,7 +4,8 @@ import { seriesColour } from '@/components/charts/series';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
-import { type SamplePreview, spectralClasses } from '@/lib/schemas/samples';
+import type { SamplePreview } from '@/lib/schemas/samples';
+import { spectralClasses } from '@/lib/schemas/spectral-classes';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import type { RangeName, SampleDraft } from './sample-draft';
 

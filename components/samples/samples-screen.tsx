@@ -4,6 +4,7 @@ import { useDeferredValue, useState } from 'react';
 import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createSample, useSamplePreview, useSamples } from '@/components/hooks/use-samples';
+import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -16,6 +17,8 @@ import { SampleCounts } from './sample-counts';
 import { draftOf, EMPTY_DRAFT, readDraft, type SampleDraft } from './sample-draft';
 import { SampleForm } from './sample-form';
 import { SampleTable } from './sample-table';
+
+const loadSchema = async () => (await import('@/lib/schemas/samples')).sampleDefinitionSchema;
 
 interface SamplesScreenProps {
   collaboration: string;
@@ -31,8 +34,9 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
   const [name, setName] = useState('');
   const [busy, setBusy] = useState<'new' | 'version'>();
   const [problem, setProblem] = useState<string>();
-  const read = readDraft(draft);
-  const { definition } = read;
+  const schema = useSchema(loadSchema);
+  const read = schema && readDraft(draft, schema);
+  const definition = read?.definition;
   const asked = useDeferredValue(definition);
   const { data: preview, error, isLoading } = useSamplePreview(collaboration, asked);
 
@@ -59,9 +63,11 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
   const fault =
     name.trim() === ''
       ? 'Give it a name first.'
-      : definition === undefined
-        ? 'The form holds something that is no selection.'
-        : undefined;
+      : read === undefined
+        ? CHECKS_COME
+        : read.faults
+          ? 'The form holds something that is no selection.'
+          : undefined;
 
   return (
     <>
@@ -92,7 +98,7 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
           />
           <SampleForm
             draft={draft}
-            faults={read.faults}
+            faults={read?.faults}
             surveys={surveys}
             groups={preview?.movingGroups ?? []}
             onChange={setDraft}

@@ -4,7 +4,7 @@ import { useState } from 'react';
 import { Button } from '@/components/ui/button';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
-import { type CombinationRule, combinationRuleSchema } from '@/lib/schemas/combinations';
+import type { CombinationRule } from '@/lib/schemas/combinations';
 import type { ChangeSettings } from '@/lib/schemas/settings';
 import type { SettingsPartProps } from './place-form';
 
@@ -68,10 +68,7 @@ export function RulesForm({
         value={rule}
         disabled={isLocked}
         onChange={({ target }) => setRule(target.value as CombinationRule)}
-        options={combinationRuleSchema.options.map((value) => ({
-          value,
-          label: ruleLabels[value],
-        }))}
+        options={Object.entries(ruleLabels).map(([value, label]) => ({ value, label }))}
       />
       <NumberField
         label="Credible level"

@@ -1,17 +1,15 @@
 'use client';
 
 import { useState } from 'react';
+import { useSchema } from '@/components/hooks/use-schema';
 import { Button } from '@/components/ui/button';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { SelectField } from '@/components/ui/select-field';
-import {
-  type AdoptedQuantity,
-  type AdoptionChoices,
-  previewAdoptionSchema,
-  type StarView,
-} from '@/lib/schemas/stars';
+import type { AdoptedQuantity, AdoptionChoices, StarView } from '@/lib/schemas/stars';
 import { AdoptDialog } from './adopt-dialog';
 import { ageWords, distanceWords } from './star-words';
+
+const loadSchema = async () => (await import('@/lib/schemas/stars')).previewAdoptionSchema;
 
 interface AdoptSeveralProps {
   collaboration: string;
@@ -43,14 +41,14 @@ export function AdoptSeveral({ collaboration, quantity, stars, onAdopted }: Adop
     return words ? [{ star, targetId: entry.targetId, words }] : [];
   });
   const taken = offered.filter(({ star }) => !left.has(star.id));
-  const checked = previewAdoptionSchema.safeParse({
+  const checked = useSchema(loadSchema)?.safeParse({
     quantity,
     choices: taken.map(({ star, targetId }) => ({
       starId: star.id,
       choice: { kind: 'entry', targetId },
     })),
   });
-  const choices: AdoptionChoices | null = checked.success ? checked.data : null;
+  const choices: AdoptionChoices | null = checked?.data ?? null;
   const toggle = (id: string) => {
     const next = new Set(left);
     if (!next.delete(id)) next.add(id);

@@ -1,11 +1,13 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useState } from 'react';
 import { TextAction } from '@/components/ui/text-action';
 import type { AdoptedQuantity, Adoption, AdoptionChoices, StarView } from '@/lib/schemas/stars';
-import { AdoptDialog } from './adopt-dialog';
-import { OutsideValue } from './outside-value';
 import { ageWords, conflictWords, distanceWords } from './star-words';
+
+const AdoptDialog = dynamic(async () => (await import('./adopt-dialog')).AdoptDialog);
+const OutsideValue = dynamic(async () => (await import('./outside-value')).OutsideValue);
 
 interface ValueChoiceProps {
   collaboration: string;

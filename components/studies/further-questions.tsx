@@ -7,7 +7,6 @@ import { FoldSection } from '@/components/ui/fold-section';
 import type { StudySummary } from '@/lib/schemas/studies';
 import { AnswerState } from './earlier-answers';
 import { kindOrder, kindWords, questionAddress } from './kind-words';
-import { kinds } from './kinds';
 
 interface FurtherQuestionsProps {
   collaboration: string;
@@ -20,16 +19,15 @@ interface FurtherQuestionsProps {
 export function FurtherQuestions(props: FurtherQuestionsProps) {
   const { collaboration, analysisKey, runId, number } = props;
   const { data: studies, error } = useRunStudies(collaboration, runId);
-  const known = kindOrder.filter((kind) => kinds[kind] !== undefined);
   const newest = newestByKind(studies ?? []);
-  const answered = known.filter((kind) => newest.get(kind)?.job.status === 'done').length;
+  const answered = kindOrder.filter((kind) => newest.get(kind)?.job.status === 'done').length;
   return (
     <FoldSection
       id="further-questions"
       number={number}
       title="Further questions"
       context="asked of this run, computed by the workers, kept with it"
-      answer={`${answered} of ${known.length} answered`}
+      answer={`${answered} of ${kindOrder.length} answered`}
     >
       {error !== undefined && (
         <p className="mb-2 text-bad text-note" role="status">
@@ -37,7 +35,7 @@ export function FurtherQuestions(props: FurtherQuestionsProps) {
         </p>
       )}
       <ul className="border-rule border-t">
-        {known.map((kind) => {
+        {kindOrder.map((kind) => {
           const study = newest.get(kind);
           const { title, question } = kindWords[kind];
           return (

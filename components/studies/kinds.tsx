@@ -27,7 +27,7 @@ const FormWaits = () => (
  * Each kind brings its form, its answer and its numbers; a page loads those of one kind.
  * The options of `dynamic` must be written out at each call: the compiler reads them.
  */
-export const kinds: { [Kind in StudyKind]?: KindEntry<Kind> } = {
+export const kinds: { [Kind in StudyKind]: KindEntry<Kind> } = {
   systematics: {
     Form: dynamic(async () => (await import('./systematics/systematics-form')).SystematicsForm, {
       loading: FormWaits,

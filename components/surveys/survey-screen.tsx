@@ -1,13 +1,12 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useRouter, useSearchParams } from 'next/navigation';
 import { useRef, useState } from 'react';
 import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
-import { SurveyMaps } from '@/components/maps/survey-maps';
 import { SharedNotice } from '@/components/sharing/shared-notice';
-import { SurveySharing } from '@/components/sharing/survey-sharing';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
 import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
@@ -20,15 +19,37 @@ import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { Shares } from '@/lib/schemas/sharing';
 import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
 import type { UploadView } from '@/lib/schemas/uploads';
-import { CompanionTable } from './companion-table';
 import { MapJobLine } from './map-job-line';
 import { describeMapSettings } from './map-setting-words';
-import { MapSettingsDialog } from './map-settings-dialog';
-import { SurveyFactsDialog } from './survey-facts-dialog';
-import { observedYears } from './survey-table';
-import { TargetPanel } from './target-panel';
-import { TargetTable } from './target-table';
-import { UploadList } from './upload-list';
+import { observedYears } from './observed-years';
+
+const PartWaits = () => (
+  <p className="py-4 text-ink3" role="status">
+    Opening
+  </p>
+);
+/** Each part comes when its tab is chosen, the dialogs when they are asked for. */
+const TargetTable = dynamic(async () => (await import('./target-table')).TargetTable);
+const TargetPanel = dynamic(async () => (await import('./target-panel')).TargetPanel);
+const SurveyMaps = dynamic(async () => (await import('@/components/maps/survey-maps')).SurveyMaps, {
+  loading: PartWaits,
+});
+const CompanionTable = dynamic(async () => (await import('./companion-table')).CompanionTable, {
+  loading: PartWaits,
+});
+const UploadList = dynamic(async () => (await import('./upload-list')).UploadList, {
+  loading: PartWaits,
+});
+const SurveySharing = dynamic(
+  async () => (await import('@/components/sharing/survey-sharing')).SurveySharing,
+  { loading: PartWaits },
+);
+const SurveyFactsDialog = dynamic(
+  async () => (await import('./survey-facts-dialog')).SurveyFactsDialog,
+);
+const MapSettingsDialog = dynamic(
+  async () => (await import('./map-settings-dialog')).MapSettingsDialog,
+);
 
 interface SurveyScreenProps {
   collaboration: string;
@@ -189,23 +210,27 @@ export function SurveyScreen(props: SurveyScreenProps) {
           }}
         />
       )}
-      <SurveyFactsDialog
-        collaboration={collaboration}
-        survey={survey}
-        isOpen={isChanging}
-        onClose={() => setChanging(false)}
-        onSaved={() => void mutate()}
-      />
-      <MapSettingsDialog
-        collaboration={collaboration}
-        survey={survey}
-        isOpen={isSetting}
-        onClose={() => setSetting(false)}
-        onSaved={() => {
-          void mutate();
-          router.refresh();
-        }}
-      />
+      {isChanging && (
+        <SurveyFactsDialog
+          collaboration={collaboration}
+          survey={survey}
+          isOpen
+          onClose={() => setChanging(false)}
+          onSaved={() => void mutate()}
+        />
+      )}
+      {isSetting && (
+        <MapSettingsDialog
+          collaboration={collaboration}
+          survey={survey}
+          isOpen
+          onClose={() => setSetting(false)}
+          onSaved={() => {
+            void mutate();
+            router.refresh();
+          }}
+        />
+      )}
       {survey.targets === 0 ? (
         <div className="mt-8">
           <EmptyState

@@ -1,29 +1,10 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment } from './common';
+import { changeableParts } from './exercise-parts';
 
-/** Parts of a recipe that an exercise may leave open. */
-export const changeableParts = [
-  'detections',
-  'prior',
-  'level',
-  'likelihood',
-  'population',
-  'stars',
-  'candidates',
-] as const;
+export { type ChangeablePart, changeableParts, partNames } from './exercise-parts';
+
 export const changeablePartSchema = z.enum(changeableParts);
-export type ChangeablePart = z.infer<typeof changeablePartSchema>;
-
-/** What a person reads for each part. */
-export const partNames: Record<ChangeablePart, string> = {
-  detections: 'which detections count',
-  prior: 'the prior of the rate',
-  level: 'the credible level',
-  likelihood: 'the likelihood',
-  population: 'the population and its ranges',
-  stars: 'surveys, sample and the rule of shared stars',
-  candidates: 'candidates and expected false detections',
-};
 
 const text = (longest: number) => z.string().trim().max(longest, `at most ${longest} characters`);
 const taskSchema = text(4000).min(1, 'something to read');

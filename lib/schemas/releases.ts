@@ -1,7 +1,10 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment } from './common';
 import { jobStatusSchema } from './jobs';
+import { licences } from './licences';
 import { orcidSchema } from './orcid';
+
+export { licences } from './licences';
 
 /** Several lines of plain text. */
 const textSchema = (longest: number) =>
@@ -11,12 +14,6 @@ const textSchema = (longest: number) =>
     .max(longest, `at most ${longest} characters`)
     .regex(/^(?:[^\p{Cc}\u202a-\u202e\u2066-\u2069]|[\n\t])*$/u, 'no control characters');
 
-export const licences = {
-  'CC-BY-4.0': 'https://creativecommons.org/licenses/by/4.0/',
-  'CC-BY-SA-4.0': 'https://creativecommons.org/licenses/by-sa/4.0/',
-  'CC0-1.0': 'https://creativecommons.org/publicdomain/zero/1.0/',
-  'ODC-By-1.0': 'https://opendatacommons.org/licenses/by/1-0/',
-} as const;
 export const licenceSchema = z.enum(
   Object.keys(licences) as [keyof typeof licences, ...(keyof typeof licences)[]],
 );

@@ -1,8 +1,10 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment, positiveSchema } from './common';
+import { spectralClasses } from './spectral-classes';
+
+export { spectralClasses } from './spectral-classes';
 
 /** First letters of spectral types, hottest first. */
-export const spectralClasses = ['O', 'B', 'A', 'F', 'G', 'K', 'M', 'L', 'T', 'Y'] as const;
 export const spectralClassSchema = z.enum(spectralClasses);
 export type SpectralClass = z.infer<typeof spectralClassSchema>;
 

@@ -5,7 +5,8 @@ import { sentenceOf } from '@/components/hooks/api-problem';
 import { changeMailPreference } from '@/components/hooks/use-settings';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { Notice } from '@/components/ui/notice';
-import { type MailPreferences, mailPreferenceWords } from '@/lib/schemas/mail';
+import type { MailPreferences } from '@/lib/schemas/mail';
+import { mailPreferenceWords } from '@/lib/schemas/mail-words';
 
 /** Which mail the person gets; what concerns the account always comes. */
 export function MailSwitches({ initial }: { initial: MailPreferences }) {

@@ -1,17 +1,20 @@
 'use client';
 
-import type { ReactNode } from 'react';
+import { lazy, type ReactNode, Suspense, useRef } from 'react';
 import { saveFile } from '@/components/charts/save-file';
 import { Cell, Row, TableBody, TableHead } from '../table';
 import type { DataColumn, Facet } from './column';
 import { FilterBar } from './filter-bar';
+import { firstRows, MANY, type RowWindow } from './row-window';
 import { rowsCsv } from './rows-csv';
 import { SelectBox, SelectHead } from './select-box';
 import { SortHead } from './sort-head';
 import { TableScroll } from './table-scroll';
 import { useDataRows } from './use-data-rows';
 import { useTableView } from './use-table-view';
-import { useVirtualRows } from './use-virtual-rows';
+
+/** Only a table of many rows needs to know which of them are in sight. */
+const RowsInSight = lazy(async () => ({ default: (await import('./rows-in-sight')).RowsInSight }));
 
 interface DataTableProps<R extends object> {
   caption: string;
@@ -65,10 +68,10 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
   );
   const table = useDataRows({ ...props, facets, view, onView });
   const shown = table.getRowModel().rows;
-  const virtual = useVirtualRows(shown.length);
+  const scroller = useRef<HTMLDivElement>(null);
+  const isVirtual = shown.length >= MANY;
   const isSelecting = selection !== undefined;
   const width = columns.length + (isSelecting ? 1 : 0);
-  const drawn = virtual.items.map((item) => ({ item, row: shown[item.index] }));
   const chosen = selection?.ids.size ?? 0;
   const hasOrder = view.sort === null && props.givenOrder !== undefined;
   const hasBar =
@@ -87,6 +90,45 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
       ),
       'text/csv',
     );
+  const draw = (window: RowWindow) => (
+    <>
+      {window.before > 0 && <Gap height={window.before} width={width} />}
+      {window.indices.map((index) => {
+        const row = shown[index];
+        return (
+          <Row
+            key={row.id}
+            ref={window.measure}
+            data-index={index}
+            aria-rowindex={isVirtual ? index + 2 : undefined}
+            isSelected={row.id === props.currentId || row.getIsSelected()}
+            className={props.onRowClick ? 'cursor-pointer' : ''}
+            onClick={props.onRowClick && (() => props.onRowClick?.(row.original))}
+          >
+            {selection && (
+              <SelectBox
+                label={selection.label(row.original)}
+                isChecked={row.getIsSelected()}
+                isDisabled={selection.canSelect?.(row.original) === false}
+                onToggle={row.getToggleSelectedHandler()}
+              />
+            )}
+            {columns.map((column) => (
+              <Cell
+                key={column.id}
+                isNumeric={column.isNumeric}
+                isRowHead={column.isRowHead}
+                className={column.className}
+              >
+                {column.cell ? column.cell(row.original) : (column.value(row.original) ?? '–')}
+              </Cell>
+            ))}
+          </Row>
+        );
+      })}
+      {window.after > 0 && <Gap height={window.after} width={width} />}
+    </>
+  );
   return (
     <div className="min-w-0">
       {hasBar && (
@@ -102,12 +144,12 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
       {props.tools}
       <TableScroll
         caption={props.caption}
-        isVirtual={virtual.isOn}
-        scroller={virtual.scroller}
-        rowCount={virtual.isOn ? shown.length + 1 : undefined}
+        isVirtual={isVirtual}
+        scroller={scroller}
+        rowCount={isVirtual ? shown.length + 1 : undefined}
       >
         <TableHead>
-          <tr aria-rowindex={virtual.isOn ? 1 : undefined}>
+          <tr aria-rowindex={isVirtual ? 1 : undefined}>
             {isSelecting && <SelectHead table={table} many={noun.many} />}
             {columns.map((column) => {
               const held = table.getColumn(column.id);
@@ -127,38 +169,13 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
           </tr>
         </TableHead>
         <TableBody>
-          {virtual.before > 0 && <Gap height={virtual.before} width={width} />}
-          {drawn.map(({ item, row }) => (
-            <Row
-              key={row.id}
-              ref={virtual.measure}
-              data-index={item.index}
-              aria-rowindex={virtual.isOn ? item.index + 2 : undefined}
-              isSelected={row.id === props.currentId || row.getIsSelected()}
-              className={props.onRowClick ? 'cursor-pointer' : ''}
-              onClick={props.onRowClick && (() => props.onRowClick?.(row.original))}
-            >
-              {selection && (
-                <SelectBox
-                  label={selection.label(row.original)}
-                  isChecked={row.getIsSelected()}
-                  isDisabled={selection.canSelect?.(row.original) === false}
-                  onToggle={row.getToggleSelectedHandler()}
-                />
-              )}
-              {columns.map((column) => (
-                <Cell
-                  key={column.id}
-                  isNumeric={column.isNumeric}
-                  isRowHead={column.isRowHead}
-                  className={column.className}
-                >
-                  {column.cell ? column.cell(row.original) : (column.value(row.original) ?? '–')}
-                </Cell>
-              ))}
-            </Row>
-          ))}
-          {virtual.after > 0 && <Gap height={virtual.after} width={width} />}
+          {isVirtual ? (
+            <Suspense fallback={draw(firstRows(shown.length))}>
+              <RowsInSight count={shown.length} scroller={scroller} draw={draw} />
+            </Suspense>
+          ) : (
+            draw(firstRows(shown.length))
+          )}
           {shown.length === 0 && (
             <tr>
               <td colSpan={width} className="py-6 text-ink3">

@@ -1,11 +1,17 @@
 import { describe, expect, it } from 'vitest';
-import { draftOf, EMPTY_DRAFT, readDraft } from '@/components/samples/sample-draft';
+import {
+  draftOf,
+  EMPTY_DRAFT,
+  readDraft as readBy,
+  type SampleDraft,
+} from '@/components/samples/sample-draft';
 import { describeSample } from '@/lib/schemas/sample-words';
 import { sampleDefinitionSchema } from '@/lib/schemas/samples';
 
 const id = '7b1e9d4e-6f0a-4c57-9d0b-2f1d3c5a7e90';
 const words = (definition: unknown) =>
   describeSample(sampleDefinitionSchema.parse(definition), () => 'Halyard');
+const readDraft = (draft: SampleDraft) => readBy(draft, sampleDefinitionSchema);
 const OUT = 'those chosen because a companion was known are left out';
 
 describe('readDraft', () => {

@@ -4,7 +4,7 @@ import { notFound } from 'next/navigation';
 import { Entrance, EntranceTitle } from '@/components/people/entrance';
 import { StopMail } from '@/components/settings/stop-mail';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
-import { mailPreferenceWords } from '@/lib/schemas/mail';
+import { mailPreferenceWords } from '@/lib/schemas/mail-words';
 import { readStopLink } from '@/lib/services/mail';
 
 export const metadata: Metadata = { title: 'Stop messages', referrer: 'no-referrer' };
