@@ -42,8 +42,8 @@ export interface Actor {
 /**
  * The person as a member of a collaboration, with the roles of this moment.
  *
- * @throws NotFound for a collaboration that is absent, that the person is no member of, that
- *   their access to rests, or that the token was not made for: these are not told apart
+ * @throws NotFound for a collaboration that is absent, that the person is no member of or
+ *   suspended in, or that the token was not made for: these are not told apart
  */
 export async function actorIn(person: KnownPerson, slug: string): Promise<Actor> {
   if (!slugSchema.safeParse(slug).success) throw new NotFound('collaboration');

@@ -211,6 +211,18 @@ describe('what goes wrong on the way', () => {
     await refusedWith('OrcidDamaged', (browser) => ask(browser, 'orcid', { orcid: damaged }));
   });
 
+  it('is told in no address when the fault is our own', async () => {
+    const browser = new Browser();
+    const answer = await ask(browser, 'orcid', { orcid: ilse.orcid });
+    const logged = vi.spyOn(process.stderr, 'write').mockReturnValue(true);
+    await query('alter table person rename column orcid to elsewhere');
+    const back = await comeBack(browser, answer);
+    await query('alter table person rename column elsewhere to orcid');
+    expect(back.href).toBe(`${webAddress()}/sign-in?error=OrcidFault`);
+    expect(logged.mock.calls.flat().join('')).toContain('orcid');
+    logged.mockRestore();
+  });
+
   it('is refused by the provider: another site to go back to, and a client without its secret', async () => {
     const address = new URL(`${issuer}/oauth/authorize`);
     address.search = new URLSearchParams({

@@ -19,6 +19,7 @@ const orcidFaults: Record<string, string> = {
   OAuthCallback: NOT_CONFIRMED,
   Callback: NOT_CONFIRMED,
   OrcidDamaged: NOT_CONFIRMED,
+  OrcidFault: 'Signing in with ORCID is not possible just now. Try again in a minute.',
   OrcidUnknown:
     'No account here is linked with this ORCID iD. Sign in another way, then link it on your own page.',
   OrcidSignedOut: 'Your session has ended, so the ORCID iD was not linked. Sign in, then link it.',

@@ -17,6 +17,8 @@ import { orcidProvider } from './orcid-provider';
 /** What the answer must still say after next-auth has written it: the refusal of this sign-in. */
 export interface SignInOutcome {
   refusal?: unknown;
+  /** What failed on the way back from ORCID: for the log, never for the address of a page. */
+  fault?: unknown;
   /** Whom ORCID let in: next-auth itself carries the iD alone. */
   signedIn?: SignedIn;
 }
@@ -106,13 +108,18 @@ export function authOptions(
       async signIn({ account }) {
         if (account?.type !== 'oauth') return true;
         const given = account.providerAccountId;
-        const answer =
-          account.provider === 'orcid-link'
-            ? await linkByOrcid(given, headers, page)
-            : await enterByOrcid(given, headers);
-        if ('goTo' in answer) return answer.goTo;
-        outcome.signedIn = answer.signedIn;
-        return true;
+        try {
+          const answer =
+            account.provider === 'orcid-link'
+              ? await linkByOrcid(given, headers, page)
+              : await enterByOrcid(given, headers);
+          if ('goTo' in answer) return answer.goTo;
+          outcome.signedIn = answer.signedIn;
+          return true;
+        } catch (fault) {
+          outcome.fault = fault;
+          return `${webAddress}/sign-in?error=OrcidFault`;
+        }
       },
       jwt: ({ token, user }) => {
         const who = outcome.signedIn ?? user;

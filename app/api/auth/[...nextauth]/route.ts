@@ -32,6 +32,13 @@ async function formOf(request: Request): Promise<Record<string, string>> {
   return text.length > LONGEST_FORM_BYTES ? {} : Object.fromEntries(new URLSearchParams(text));
 }
 
+function logFault(error: unknown): void {
+  const fault = error instanceof Error ? error.stack : String(error);
+  process.stderr.write(
+    `${JSON.stringify({ at: new Date().toISOString(), path: '/api/auth', fault })}\n`,
+  );
+}
+
 /**
  * Every address of next-auth: sign-in, sign-out, session and their CSRF token.
  *
@@ -60,14 +67,12 @@ async function handle(
     answer as unknown as NextApiResponse,
     authOptions(outcome, request.headers, cookies[callbackCookieName()]),
   );
-  const { refusal } = outcome;
+  const { refusal, fault } = outcome;
+  if (fault !== undefined) logFault(fault);
   if (refusal instanceof TooMany) {
     answer.status(refusal.status).setHeader('Retry-After', String(refusal.retryAfterS));
   } else if (refusal !== undefined && !(refusal instanceof LabError)) {
-    const fault = refusal instanceof Error ? refusal.stack : String(refusal);
-    process.stderr.write(
-      `${JSON.stringify({ at: new Date().toISOString(), path: '/api/auth', fault })}\n`,
-    );
+    logFault(refusal);
     answer.status(503).setHeader('Retry-After', '5');
   }
   return answer.toResponse();
