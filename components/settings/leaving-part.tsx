@@ -26,7 +26,7 @@ export function LeavingPart({
 }) {
   const { data: view = initial, mutate } = useLeaving(collaboration, initial);
   const [busy, setBusy] = useState<string>();
-  const [problem, setProblem] = useState<string>();
+  const [problem, setProblem] = useState<{ of: string; words: string }>();
   const [isAsking, setAsking] = useState(false);
   const moment = useMoment();
   const perform = async (name: string, task: () => Promise<LeavingView>) => {
@@ -35,12 +35,19 @@ export function LeavingPart({
     try {
       await mutate(await task(), { revalidate: false });
     } catch (reason) {
-      setProblem(sentenceOf(reason));
+      setProblem({ of: name, words: sentenceOf(reason) });
     }
     setBusy(undefined);
     setAsking(false);
   };
   const isPacking = view.exports.some(({ status }) => status === 'waiting' || status === 'running');
+  const refusal = (
+    <div className="mb-3">
+      <Notice tone="bad" title="It was not done." isAnnounced>
+        {problem?.words}
+      </Notice>
+    </div>
+  );
   return (
     <>
       <section className="min-w-0">
@@ -49,6 +56,7 @@ export function LeavingPart({
           One archive with every table as JSON, every uploaded file as it came, and the files of
           each release. It holds no password and no token.
         </p>
+        {problem?.of === 'export' && refusal}
         <Button
           icon="download"
           onClick={() => void perform('export', () => askForExport(collaboration))}
@@ -61,11 +69,7 @@ export function LeavingPart({
       </section>
       <section className="min-w-0">
         <SectionOpener title="Delete the collaboration" />
-        {problem !== undefined && (
-          <Notice tone="bad" title="It was not done." isAnnounced>
-            {problem}
-          </Notice>
-        )}
+        {problem && problem.of !== 'export' && refusal}
         {view.deletion ? (
           <>
             <Notice tone="warn" title={`It will be deleted on ${moment(view.deletion.dueAt)}.`}>

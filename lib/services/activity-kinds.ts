@@ -32,6 +32,7 @@ const newsOf: Record<ActivityKind, readonly string[]> = {
     'create-collaboration',
     'rename',
     'change-settings',
+    'delete-collaboration',
     'join',
     'invite',
     'resend-invitation',
