@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useMemo } from 'react';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { EmptyState } from '@/components/ui/empty-state';
@@ -14,9 +15,11 @@ import { CopyLink } from './copy-link';
 import { type ComparedInput, type ComparedRun, compareInputs, isSameInAll } from './differences';
 import { PickList, type RunChoice } from './pick-list';
 import { ByLevel, ComparisonInWords, Differences } from './sections';
-import { StarByStar } from './star-by-star';
-import { WaySection } from './way-section';
 import { compareSentences, titleOf } from './words';
+
+/** Below the limits: drawn by the server, made live after them. */
+const StarByStar = dynamic(async () => (await import('./star-by-star')).StarByStar);
+const WaySection = dynamic(async () => (await import('./way-section')).WaySection);
 
 interface CompareScreenProps {
   collaboration: string;

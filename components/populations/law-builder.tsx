@@ -12,7 +12,6 @@ import { StateMark } from '@/components/ui/state-mark';
 import { needsHostMass } from '@/lib/population';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
-import { BuilderControls } from './builder-controls';
 import type { PopulationBuilderProps } from './builder-props';
 import { type BuilderSetting, builderToQuery, defaultSetting } from './builder-setting';
 import { InWords } from './in-words';
@@ -40,6 +39,9 @@ function PreviewWaits() {
     </p>
   );
 }
+
+/** Drawn by the server, and made live after the rest. */
+const BuilderControls = dynamic(async () => (await import('./builder-controls')).BuilderControls);
 
 interface LawBuilderProps extends PopulationBuilderProps {
   start: LawDefinition;

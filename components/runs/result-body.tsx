@@ -2,7 +2,7 @@
 
 import dynamic from 'next/dynamic';
 import { type ReactNode, useCallback, useDeferredValue, useMemo, useRef, useState } from 'react';
-import { PosteriorChart, type PosteriorView } from '@/components/charts/posterior-chart';
+import type { PosteriorView } from '@/components/charts/posterior-chart';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
@@ -23,7 +23,6 @@ import { sampleOf } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
 import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
-import { ResultConsole } from './result-console';
 import { conditionRows, ResultStatement } from './result-statement';
 import { runFigures } from './run-figures';
 import { type ShownResult, showResult } from './shown-result';
@@ -32,7 +31,11 @@ import { useLiveResult } from './use-live-result';
 import { useLiveTask } from './use-live-task';
 import { useMapFigures } from './use-map-figures';
 
-/** Below the number and its controls: drawn by the server, made live after them. */
+/** Drawn by the server with the number that they belong to, and made live after it. */
+const PosteriorChart = dynamic(
+  async () => (await import('@/components/charts/posterior-chart')).PosteriorChart,
+);
+const ResultConsole = dynamic(async () => (await import('./result-console')).ResultConsole);
 const CalibrationCheck = dynamic(
   async () => (await import('@/components/studies/calibration/calibration-check')).CalibrationCheck,
 );
