@@ -18,6 +18,9 @@ export function HelpFrame({ children }: { children: ReactNode }) {
           <Link href="/help" className="flex min-h-11 items-center font-semibold">
             Help
           </Link>
+          <Link href="/api-guide" className="flex min-h-11 items-center font-semibold">
+            API
+          </Link>
         </div>
         <Ruler />
       </header>

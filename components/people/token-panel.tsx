@@ -1,5 +1,6 @@
 'use client';
 
+import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { revokeToken, useTokens } from '@/components/hooks/use-people';
@@ -105,7 +106,11 @@ export function TokenPanel({
             </TableBody>
           </Table>
         )}
-        <pre className="mt-4 overflow-x-auto rounded-plate bg-well px-4 py-3 text-ink2 text-note">
+        <p className="mt-4 text-ink2 text-note">
+          The <Link href="/api-guide">pages of the API</Link> have each address with its scope and
+          an example.
+        </p>
+        <pre className="mt-3 overflow-x-auto rounded-plate bg-well px-4 py-3 text-ink2 text-note">
           {`curl -H "Authorization: Bearer rb_…" \\\n  ${address}/api/v1/collaborations/${collaboration}/analyses`}
         </pre>
       </section>

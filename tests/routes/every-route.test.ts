@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { type ZodType, z } from 'zod';
 import type { RouteHandler } from '@/app/api/v1/handler';
+import { exampleRequest } from '@/lib/schemas/api-examples';
 import { isPaged, takesIfMatch, takesKey } from '@/lib/schemas/api-route';
 import { type ApiRoute, apiRoutes } from '@/lib/schemas/api-routes';
 import { database } from '@/models';
@@ -166,4 +167,28 @@ it.each(everyRoute)('is described as it is: %s', async (_, route) => {
   if (route.method === 'post') expect(takesKey(route)).toBe(asks.takesKey);
   if (asks.status) expect(route.status).toBe(asks.status);
   else if (route.answer ?? route.files) expect(route.status ?? 200).toBe(200);
+});
+
+const readable = apiRoutes.filter(({ method, access }) => method === 'get' && access !== 'session');
+
+it('every example of reading is answered, if only with "not found"', async () => {
+  const token = await tokenOf(team.people.owner, team.collaboration);
+  const statuses: number[] = [];
+  for (const route of readable) {
+    const example = exampleRequest(route, webAddress());
+    if (!example) throw new Error(`${route.path} has no example`);
+    const { pathname, search } = new URL(example.address);
+    const pattern = route.path.replace(/\{(\w+)\}/g, '(?<$1>[^/]+)');
+    const params = { ...new RegExp(`^${pattern}$`).exec(pathname)?.groups };
+    if (params.collaboration) params.collaboration = team.collaboration.slug;
+    const headers = example.isSigned ? bearer(token) : {};
+    const { status } = await call(await handlerOf(route), {
+      path: `${pathname}${search}`,
+      params,
+      headers,
+    });
+    expect([200, 404], route.path).toContain(status);
+    statuses.push(status);
+  }
+  expect(statuses.filter((status) => status === 200).length).toBeGreaterThan(15);
 });
