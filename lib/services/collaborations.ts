@@ -14,6 +14,7 @@ const RESERVED = new Set([
     'about',
     'admin',
     'api',
+    'api-guide',
     'collaborations',
     'fonts',
     'health',
