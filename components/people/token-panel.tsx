@@ -106,13 +106,13 @@ export function TokenPanel({
             </TableBody>
           </Table>
         )}
-        <p className="mt-4 text-ink2 text-note">
+        <pre className="mt-4 overflow-x-auto rounded-plate bg-well px-4 py-3 text-ink2 text-note">
+          {`curl -H "Authorization: Bearer rb_…" \\\n  ${address}/api/v1/collaborations/${collaboration}/analyses`}
+        </pre>
+        <p className="mt-3 text-ink2 text-note">
           The <Link href="/api-guide">pages of the API</Link> have each address with its scope and
           an example.
         </p>
-        <pre className="mt-3 overflow-x-auto rounded-plate bg-well px-4 py-3 text-ink2 text-note">
-          {`curl -H "Authorization: Bearer rb_…" \\\n  ${address}/api/v1/collaborations/${collaboration}/analyses`}
-        </pre>
       </section>
       <section className="min-w-0">
         <SectionOpener title="New token" />
