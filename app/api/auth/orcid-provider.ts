@@ -13,7 +13,7 @@ export type OrcidProviderId = 'orcid' | 'orcid-link';
 export function orcidProvider(
   id: OrcidProviderId,
   { issuer, clientId, clientSecret }: OrcidSettings,
-): OAuthConfig<{ orcid: string }> {
+): OAuthConfig<{ sub?: string }> {
   return {
     id,
     name: 'ORCID',
@@ -23,11 +23,11 @@ export function orcidProvider(
     clientSecret,
     authorization: { url: `${issuer}/oauth/authorize`, params: { scope: '/authenticate' } },
     token: `${issuer}/oauth/token`,
-    userinfo: { request: async ({ tokens }) => ({ orcid: String(tokens.orcid ?? '') }) },
+    userinfo: { request: async ({ tokens }) => ({ sub: String(tokens.orcid ?? '') }) },
     client: { token_endpoint_auth_method: 'client_secret_post' },
     checks: ['state', 'pkce'],
     httpOptions: { timeout: LONGEST_WAIT_MS },
     // Only the iD counts; whose account it opens is decided in the callback.
-    profile: ({ orcid }) => ({ id: orcid || 'none', name: '', email: '', sessionId: '' }),
+    profile: ({ sub }) => ({ id: sub || 'none', name: '', email: '', sessionId: '' }),
   };
 }
