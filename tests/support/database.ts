@@ -4,6 +4,7 @@ import { closeDatabase } from '@/models';
 
 const TEMPLATE = 'rarebound_template';
 const TEMPLATE_IN_USE = '55006';
+const VACUUM_IS_NOT_OURS = '42501';
 
 export interface TestDatabase {
   name: string;
@@ -77,9 +78,20 @@ export async function findOpenConnections(
 export async function dropTestDatabase(database: TestDatabase): Promise<void> {
   await closeDatabase();
   const open = await findOpenConnections(database);
-  await withClient(maintenanceUrl(), (client) =>
-    client.query(`drop database if exists ${database.name} with (force)`),
-  );
+  await withClient(maintenanceUrl(), async (client) => {
+    const end = Date.now() + 20_000;
+    for (;;) {
+      try {
+        await client.query(`drop database if exists ${database.name} with (force)`);
+        return;
+      } catch (error) {
+        // The server's own vacuum is at work there, and is not ours to end: it soon leaves.
+        const isVacuumed = (error as { code?: string }).code === VACUUM_IS_NOT_OURS;
+        if (!isVacuumed || Date.now() > end) throw error;
+        await new Promise((resolve) => setTimeout(resolve, 250));
+      }
+    }
+  });
   if (open.length > 0) {
     throw new Error(`${open.length} connections were left open\n  ${open.join('\n  ')}`);
   }

@@ -3,6 +3,7 @@ import type { RouteHandler } from '@/app/api/v1/handler';
 import { type Action, may, type Standing } from '@/lib/access/permissions';
 import { makeToken } from '@/lib/access/tokens';
 import { type Role, roleSchema } from '@/lib/schemas/common';
+import { database } from '@/models';
 import { withDatabase } from './database';
 import {
   addMember,
@@ -56,7 +57,7 @@ export function describePermissions(cells: readonly Cell[]): void {
     otherTeam = await createCollaborationWith(roles);
   });
   beforeEach(async () => {
-    await query('delete from rate_limit');
+    await database().query('delete from rate_limit');
   });
 
   async function ask(cell: Cell, personId: string, headers: Record<string, string>) {
