@@ -1,6 +1,5 @@
 'use client';
 
-import dynamic from 'next/dynamic';
 import { useRouter, useSearchParams } from 'next/navigation';
 import { useRef, useState } from 'react';
 import { ExportButton } from '@/components/exports/export-button';
@@ -22,34 +21,16 @@ import type { UploadView } from '@/lib/schemas/uploads';
 import { MapJobLine } from './map-job-line';
 import { describeMapSettings } from './map-setting-words';
 import { observedYears } from './observed-years';
-
-const PartWaits = () => (
-  <p className="py-4 text-ink3" role="status">
-    Opening
-  </p>
-);
-/** Each part comes when its tab is chosen, the dialogs when they are asked for. */
-const TargetTable = dynamic(async () => (await import('./target-table')).TargetTable);
-const TargetPanel = dynamic(async () => (await import('./target-panel')).TargetPanel);
-const SurveyMaps = dynamic(async () => (await import('@/components/maps/survey-maps')).SurveyMaps, {
-  loading: PartWaits,
-});
-const CompanionTable = dynamic(async () => (await import('./companion-table')).CompanionTable, {
-  loading: PartWaits,
-});
-const UploadList = dynamic(async () => (await import('./upload-list')).UploadList, {
-  loading: PartWaits,
-});
-const SurveySharing = dynamic(
-  async () => (await import('@/components/sharing/survey-sharing')).SurveySharing,
-  { loading: PartWaits },
-);
-const SurveyFactsDialog = dynamic(
-  async () => (await import('./survey-facts-dialog')).SurveyFactsDialog,
-);
-const MapSettingsDialog = dynamic(
-  async () => (await import('./map-settings-dialog')).MapSettingsDialog,
-);
+import {
+  CompanionTable,
+  MapSettingsDialog,
+  SurveyFactsDialog,
+  SurveyMaps,
+  SurveySharing,
+  TargetPanel,
+  TargetTable,
+  UploadList,
+} from './survey-parts';
 
 interface SurveyScreenProps {
   collaboration: string;
