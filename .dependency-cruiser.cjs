@@ -81,8 +81,11 @@ module.exports = {
     {
       name: 'launcher-before-install',
       severity: 'error',
-      comment: 'it installs the packages, so it can use none',
-      from: { path: '^lib/local/.*\\.mjs$', pathNot: '^lib/local/compile-kernels\\.mjs$' },
+      comment: 'it installs the packages, so it can use none but where they are there already',
+      from: {
+        path: '^lib/local/.*\\.mjs$',
+        pathNot: '^lib/local/(compile-kernels|database-copy)\\.mjs$',
+      },
       to: { pathNot: '^lib/local/.*\\.mjs$', dependencyTypesNot: ['core'] },
     },
     {

@@ -21,7 +21,9 @@ export default defineConfig({
   test: {
     maxWorkers: 2,
     projects: [
-      project('unit', ['tests/lib/**/*.test.ts', 'tests/components/**/*.test.ts'], { isolate: false }),
+      project('unit', ['tests/lib/**/*.test.ts', 'tests/components/**/*.test.ts'], {
+        isolate: false,
+      }),
       // Pure functions against outside values: no state that one file could leave to the next.
       project('reference', ['tests/reference/**/*.test.ts'], { isolate: false }),
       // Other programs, asked anew: the step of that name finds out which are installed.

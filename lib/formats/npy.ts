@@ -27,7 +27,7 @@ function parseHeader(text: string, place: Place, faults: FaultReport): Header | 
   if (header.test(text) && descr !== undefined && order && shape !== undefined) {
     const sides = shape
       .split(',')
-      .flatMap((side) => (/\d/.test(side) ? [Number.parseInt(side)] : []));
+      .flatMap((side) => (/\d/.test(side) ? [Number.parseInt(side, 10)] : []));
     return { descr, isFortran: order === 'True', shape: sides };
   }
   const written = /'shape'\s*:\s*(.+?)\s*,?\s*\}/.exec(text)?.[1] ?? text.trim();

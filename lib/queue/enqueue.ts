@@ -1,8 +1,9 @@
 import type { Transaction } from 'sequelize';
+import { requestIdNow } from '@/lib/access/request-id';
 import { JobRow } from '@/models';
 import { type JobKind, type JobPayload, jobKinds } from './kinds';
 import { MAX_ATTEMPTS } from './lease';
-import { requestIdNow } from './request-id';
+
 import { select } from './statement';
 
 interface NewJob<Kind extends JobKind> {

@@ -1,8 +1,8 @@
 import { createHash, randomUUID } from 'node:crypto';
 import type { KnownPerson } from '@/lib/access/actor';
 import { type Budget, limits } from '@/lib/access/attempts';
+import { withinRequest } from '@/lib/access/request-id';
 import { config } from '@/lib/config';
-import { withinRequest } from '@/lib/queue/request-id';
 import { observeRequest } from '@/lib/services/metrics';
 import { logRequest, problemOf } from './problem';
 

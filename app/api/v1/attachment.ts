@@ -1,9 +1,13 @@
-import type { WrittenBytes } from '@/lib/formats';
+/** Bytes whose number is known before they are made, part by part. */
+interface Parts {
+  size: number;
+  parts(): AsyncIterable<Uint8Array>;
+}
 
 export interface Attached {
   fileName: string;
   contentType: string;
-  content: WrittenBytes | Uint8Array | string;
+  content: Parts | Uint8Array | string;
 }
 
 /**
@@ -24,7 +28,7 @@ export function contentDisposition(fileName: string): string {
 }
 
 /** A part is made when the one before has gone out, so that a large file never lies in memory. */
-function streamOf(content: WrittenBytes): ReadableStream<Uint8Array> {
+function streamOf(content: Parts): ReadableStream<Uint8Array> {
   const parts = content.parts()[Symbol.asyncIterator]();
   return new ReadableStream<Uint8Array>(
     {
