@@ -90,8 +90,10 @@ function Side({
           {side.letter}
         </b>
         <span className="min-w-0">
-          <Link href={`/${collaboration}/analyses/${side.address.key}`}>{side.address.key}</Link>,
-          run {side.run.number}
+          <Link href={`/${collaboration}/analyses/${side.address.key}`} className="underline">
+            {side.address.key}
+          </Link>
+          , run {side.run.number}
           {side.run.createdBy && `, ${side.run.createdBy}`}
         </span>
       </p>

@@ -110,8 +110,11 @@ export function TokenPanel({
           {`curl -H "Authorization: Bearer rb_…" \\\n  ${address}/api/v1/collaborations/${collaboration}/analyses`}
         </pre>
         <p className="mt-3 text-ink2 text-note">
-          The <Link href="/api-guide">pages of the API</Link> have each address with its scope and
-          an example.
+          The{' '}
+          <Link href="/api-guide" className="underline">
+            pages of the API
+          </Link>{' '}
+          have each address with its scope and an example.
         </p>
       </section>
       <section className="min-w-0">

@@ -89,13 +89,16 @@ def main(address, collaboration, token_file, folder=None):
     folder = pathlib.Path(folder or pathlib.Path(__file__).parent)
     lab = Laboratory(address.rstrip("/"), collaboration, token)
 
-    lab.upload("cooling-tables", folder / "cooling-table.csv")
+    # A name of its own: a file of the same name would become the next version of another's table.
+    name = f"Dotterel {time.time_ns()}"
+    title = json.dumps({"title": name})
+    lab.upload("cooling-tables", folder / "cooling-table.csv", settings=title)
     tables = lab.get("cooling-tables")["coolingTables"]
-    cooling = next(table["id"] for table in tables if table["name"] == "cooling-table")
+    cooling = next(table["id"] for table in tables if table["name"] == name)
     survey = lab.post(
         "surveys",
         {
-            "name": f"Dotterel {time.time_ns()}",
+            "name": name,
             "band": "K",
             "mapSettings": {"cooling": {"kind": "table", "coolingTableId": cooling}},
         },
