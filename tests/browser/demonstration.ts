@@ -32,7 +32,7 @@ export async function signIn(page: Page, role: string): Promise<void> {
   await page.goto('/sign-in');
   await page.getByLabel('E-mail').fill(email);
   await page.getByLabel('Password', { exact: true }).fill(password);
-  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.getByRole('button', { name: 'Sign in', exact: true }).click();
   await page.waitForURL(`**${LAB}`);
   await expect(page.getByRole('heading', { level: 1, name: 'Breakwater' })).toBeVisible();
 }

@@ -191,6 +191,8 @@ test('a student sets the detections aside in a copy and compares both', async ({
   });
 
   const zero = await test.step('a copy without detections is run', async () => {
+    // A click on what the server drew counts once the page's own script has come.
+    await page.waitForLoadState('networkidle');
     await page.getByRole('button', { name: 'Copy', exact: true }).first().click();
     await expect(page.getByText('No run yet').first()).toBeVisible();
     await page.getByRole('button', { name: 'Run', exact: true }).click();
