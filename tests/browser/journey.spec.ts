@@ -151,7 +151,7 @@ test('a statistician takes a survey from its files to an upper limit', async ({
   await test.step('the exported limits carry level, prior and the word draft', async () => {
     await page.getByRole('button', { name: 'Export: files of run 1' }).click();
     const arriving = page.waitForEvent('download');
-    await page.getByRole('link', { name: /^CSV, Limits and intervals/ }).click();
+    await page.getByRole('link', { name: /^CSV\s*, Limits and intervals/ }).click();
     const text = await readFile(await (await arriving).path(), 'utf8');
     expect(text).toContain('0.95');
     expect(text).toContain('uniform');
