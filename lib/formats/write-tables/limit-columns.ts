@@ -1,16 +1,7 @@
 import type { ColumnDefinition } from './written-table';
 
-/** One row per range, quantity, counting rule, interval and level: the first 21 in their fixed order. */
-export const limitColumns: readonly ColumnDefinition[] = [
-  { name: 'analysis', type: 'text', description: 'Analysis', ucd: 'meta.id' },
-  { name: 'subset', type: 'text', description: 'Surveys whose stars were used' },
-  {
-    name: 'likelihood',
-    type: 'text',
-    description: 'mean-number: Poisson over all companions; host-fraction: one trial a star',
-  },
-  { name: 'population', type: 'text', description: 'Population of companions and its version' },
-  { name: 'rate_prior', type: 'text', description: 'Prior of the quantity' },
+/** The box that a limit or a population is about. */
+const rangeColumns: readonly ColumnDefinition[] = [
   {
     name: 'mass_min',
     type: 'number',
@@ -39,6 +30,20 @@ export const limitColumns: readonly ColumnDefinition[] = [
     measures: 'semi-major axis',
     ucd: 'phys.size.smajAxis;stat.max',
   },
+];
+
+/** One row per range, quantity, counting rule, interval and level: the first 21 in their fixed order. */
+export const limitColumns: readonly ColumnDefinition[] = [
+  { name: 'analysis', type: 'text', description: 'Analysis', ucd: 'meta.id' },
+  { name: 'subset', type: 'text', description: 'Surveys whose stars were used' },
+  {
+    name: 'likelihood',
+    type: 'text',
+    description: 'mean-number: Poisson over all companions; host-fraction: one trial a star',
+  },
+  { name: 'population', type: 'text', description: 'Population of companions and its version' },
+  { name: 'rate_prior', type: 'text', description: 'Prior of the quantity' },
+  ...rangeColumns,
   {
     name: 'quantity',
     type: 'text',
@@ -161,34 +166,7 @@ export const populationColumns: readonly ColumnDefinition[] = [
     description: 'The laws in words; MJ is the mass of Jupiter',
     ucd: 'meta.note',
   },
-  {
-    name: 'mass_min',
-    type: 'number',
-    description: 'Lower edge in companion mass; missing where it differs from star to star',
-    measures: 'companion mass',
-    ucd: 'phys.mass;stat.min',
-  },
-  {
-    name: 'mass_max',
-    type: 'number',
-    description: 'Upper edge in companion mass; missing where it differs from star to star',
-    measures: 'companion mass',
-    ucd: 'phys.mass;stat.max',
-  },
-  {
-    name: 'semi_major_axis_min',
-    type: 'number',
-    description: 'Lower edge in semi-major axis',
-    measures: 'semi-major axis',
-    ucd: 'phys.size.smajAxis;stat.min',
-  },
-  {
-    name: 'semi_major_axis_max',
-    type: 'number',
-    description: 'Upper edge in semi-major axis',
-    measures: 'semi-major axis',
-    ucd: 'phys.size.smajAxis;stat.max',
-  },
+  ...rangeColumns,
   { name: 'mass_ratio_min', type: 'number', description: 'Lower edge in companion over host mass' },
   { name: 'mass_ratio_max', type: 'number', description: 'Upper edge in companion over host mass' },
   {
