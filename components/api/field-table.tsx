@@ -11,17 +11,24 @@ interface FieldTableProps {
 
 /** Fields with their types; a named shape is a link to its own table. */
 export function FieldTable({ caption, fields, isSent = false }: FieldTableProps) {
+  const rows = fields.map((field) => ({
+    ...field,
+    remarks: [field.where && field.where !== 'query' ? `in the ${field.where}` : '', field.words]
+      .filter(Boolean)
+      .join('; '),
+  }));
+  const hasRemarks = rows.some(({ remarks }) => remarks !== '');
   return (
     <Table caption={caption} isCaptionShown>
       <TableHead>
         <Row>
           <HeadCell>field</HeadCell>
           <HeadCell>type</HeadCell>
-          <HeadCell>remarks</HeadCell>
+          {hasRemarks && <HeadCell>remarks</HeadCell>}
         </Row>
       </TableHead>
       <TableBody>
-        {fields.map(({ name, where, type, shape, isRequired, words }) => (
+        {rows.map(({ name, where, type, shape, isRequired, remarks }) => (
           <Row key={`${where}:${name}`}>
             <Cell isRowHead>
               <code className="font-normal">{name || 'the whole'}</code>
@@ -36,11 +43,7 @@ export function FieldTable({ caption, fields, isSent = false }: FieldTableProps)
                 </Link>
               )}
             </Cell>
-            <Cell className="min-w-40 text-ink2">
-              {[where && where !== 'query' ? `in the ${where}` : '', words]
-                .filter(Boolean)
-                .join('; ')}
-            </Cell>
+            {hasRemarks && <Cell className="min-w-40 text-ink2">{remarks}</Cell>}
           </Row>
         ))}
       </TableBody>

@@ -5,6 +5,7 @@ import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/u
 import { TextField } from '@/components/ui/text-field';
 import type { GuideGroup } from '@/lib/schemas/api-guide';
 import { apiProblems } from '@/lib/schemas/api-problems';
+import { ApiPath } from './api-path';
 
 /** A form of the page itself, so that a search has an address and needs no script. */
 export function GuideSearch({ words }: { words: string }) {
@@ -28,9 +29,9 @@ export function GuideSearch({ words }: { words: string }) {
 /** Every operation in a line, by noun. */
 export function GuideContents({ groups }: { groups: readonly GuideGroup[] }) {
   return (
-    <div className="grid gap-x-14 gap-y-10 lg:grid-cols-2">
+    <div className="gap-x-14 lg:columns-2">
       {groups.map(({ noun, title, operations }) => (
-        <section key={noun} className="min-w-0">
+        <section key={noun} className="mb-10 min-w-0 break-inside-avoid">
           <SectionOpener
             title={
               <Link href={`/api-guide/${noun}`} prefetch={false}>
@@ -48,8 +49,8 @@ export function GuideContents({ groups }: { groups: readonly GuideGroup[] }) {
                 >
                   {summary}
                 </Link>
-                <code className="break-all text-ink3 text-note">
-                  {method} {path}
+                <code className="break-words text-ink3 text-note">
+                  {method} <ApiPath path={path} />
                 </code>
               </li>
             ))}

@@ -1,6 +1,7 @@
 import Link from 'next/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { GuideOperation } from '@/lib/schemas/api-guide';
+import { ApiPath } from './api-path';
 import { FieldTable } from './field-table';
 
 const who: Record<GuideOperation['access'], string> = {
@@ -37,9 +38,9 @@ export function OperationEntry({ operation }: { operation: GuideOperation }) {
           </a>
         }
       />
-      <p className="mb-4 break-all">
+      <p className="mb-4 break-words">
         <code>
-          <span className="font-semibold">{method}</span> {path}
+          <span className="font-semibold">{method}</span> <ApiPath path={path} />
         </code>
       </p>
       <div className="grid gap-x-14 gap-y-6 xl:grid-cols-2">

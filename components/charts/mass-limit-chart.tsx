@@ -137,7 +137,7 @@ function lowest(limits: Float64Array): number | undefined {
   return best;
 }
 
-/** The lower line is named under its best place, the upper one at its end: they may lie close. */
+/** The lower line is named under its best place, the upper one beside its beginning, where nothing else is. */
 function namePlace(
   limits: Float64Array,
   au: Float64Array,
@@ -148,10 +148,10 @@ function namePlace(
   const best = lowest(limits);
   if (best === undefined) return undefined;
   if (isLower) return { x: x(au[best]), y: y(limits[best]) + 18, anchor: 'middle' } as const;
-  const end = limits.reduce((last, limit, i) => (Number.isFinite(limit) ? i : last), -1);
-  const at = { x: x(au[end]), y: y(limits[end]) };
+  const start = limits.findIndex(Number.isFinite);
+  const at = { x: x(au[start]), y: y(limits[start]) };
   return at.x + 150 < right
-    ? ({ x: at.x + 8, y: at.y + 4, anchor: 'start' } as const)
+    ? ({ x: at.x + 9, y: at.y + 6, anchor: 'start' } as const)
     : ({ x: right, y: at.y - 8, anchor: 'end' } as const);
 }
 

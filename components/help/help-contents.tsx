@@ -1,12 +1,15 @@
 import Link from 'next/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { type HelpGroup, helpGroups, helpWordNames, helpWords } from '@/lib/help';
+import { typesetParagraph } from '@/lib/help/typeset';
+import { TypesetText } from './typeset';
 
-/** The first sentence of a definition, without its formulas' dollar signs. */
+const LONGEST = 220;
+
+/** Up to its first full stop, or its colon where that is far; those inside a formula end nothing. */
 function firstSentence(definition: string): string {
-  const plain = definition.replace(/\$[^$]*\$/g, '…');
-  const end = plain.search(/[.:;](?= |$)/);
-  return end < 0 ? plain : `${plain.slice(0, end)}.`;
+  const sentence = /^(?:\$[^$]*\$|[^.$]|\.(?! ))*\.?/.exec(definition)?.[0] ?? definition;
+  return sentence.length > LONGEST ? sentence.replace(/:.*$/s, '.') : sentence;
 }
 
 /** Every word, by group, each with what it means in a sentence. */
@@ -28,7 +31,9 @@ export function HelpContents() {
                     {helpWords[word].title}
                   </Link>
                   <span className="py-1 text-ink2 text-note">
-                    {firstSentence(helpWords[word].definition)}
+                    <TypesetText
+                      parts={typesetParagraph(firstSentence(helpWords[word].definition))}
+                    />
                   </span>
                 </li>
               ))}

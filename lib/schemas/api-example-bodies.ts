@@ -57,3 +57,14 @@ export const exampleBodies: Record<string, unknown> = {
   [`patch ${team}/releases/{release}`]: { title: 'Few giant planets beyond 10 au' },
   [`patch ${team}/exercises/{exercise}`]: { title: 'Which prior, and why' },
 };
+
+/** Files of examples, where an address ends in one. */
+export const exampleFiles: Record<string, string> = {
+  [`${team}/runs/{run}/exports/{file}`]: 'limits.csv',
+  [`${team}/surveys/{survey}/exports/{file}`]: 'targets.ecsv',
+  [`${team}/samples/{sample}/exports/{file}`]: 'members.csv',
+  [`${team}/stars/exports/{file}`]: 'stars.csv',
+  [`${team}/populations/exports/{file}`]: 'populations.csv',
+  [`${team}/maps/{map}/exports/{file}`]: 'maps.npy',
+  '/api/v1/releases/{code}/files/{file}': 'bundle.zip',
+};

@@ -1,5 +1,5 @@
 import { type ZodType, z } from 'zod';
-import { exampleBodies } from './api-example-bodies';
+import { exampleBodies, exampleFiles } from './api-example-bodies';
 import { type ApiRoute, takesKey } from './api-route';
 
 /** A request that the handlers take, from which every language of an example is written. */
@@ -25,7 +25,6 @@ const parts: Record<string, string> = {
   population: 'P-1',
   release: 'R-1',
   exercise: 'E-1',
-  file: 'table.csv',
   kind: 'targets',
   code: 'the-code',
   token: 'the-token',
@@ -121,7 +120,8 @@ function queryOf({ query }: ApiRoute): string {
  */
 export function exampleRequest(one: ApiRoute, origin: string): ExampleRequest | null {
   if (one.access === 'session') return null;
-  const address = one.path.replace(/\{(\w+)\}/g, (_, name) => parts[name] ?? ID);
+  const named = { ...parts, file: exampleFiles[one.path] };
+  const address = one.path.replace(/\{(\w+)\}/g, (_, name) => named[name] ?? ID);
   const body =
     one.body && (exampleBodies[`${one.method} ${one.path}`] ?? exampleOf(shapeOf(one.body)));
   const type = one.uploadType ?? 'application/octet-stream';
@@ -148,7 +148,7 @@ export function asCurl({
   hasKey,
   answer,
 }: ExampleRequest): string {
-  const words = [`curl --fail-with-body ${inShell(address)}`];
+  const words = [`curl -sS --fail-with-body ${inShell(address)}`];
   if (method !== 'GET') words.push(`-X ${method}`);
   if (isSigned) words.push('-H "Authorization: Bearer $RAREBOUND_TOKEN"');
   if (hasKey) words.push('-H "Idempotency-Key: $(uuidgen)"');

@@ -107,15 +107,36 @@ function fieldsOf(schema: Schema, place = '', depth = 0): GuideField[] {
     return [field, ...(depth < DEEPEST ? fieldsOf(member, name, depth + 1) : [])];
   });
   const items = schema.items && depth < DEEPEST ? fieldsOf(schema.items, `${place}[]`, depth) : [];
-  const choices = [...choicesOf(schema), ...(schema.allOf ?? [])];
-  const others = choices.flatMap((choice) => fieldsOf(choice, place, depth));
-  const known = new Set<string>();
-  return [...own, ...items, ...others].filter(({ name }) => {
-    const isNew = !known.has(name);
-    known.add(name);
-    return isNew;
+  const parts = (schema.allOf ?? []).flatMap((part) => fieldsOf(part, place, depth));
+  const choices = choicesOf(schema).map((choice) => fieldsOf(choice, place, depth));
+  return onceEach([...own, ...items, ...parts, ...ofAnyChoice(choices)]);
+}
+
+const joined = (words: string[], between: string) =>
+  [...new Set(words)].filter(Boolean).join(between);
+
+/** Fields of several shapes of which one is given: each with every type that it may have. */
+function ofAnyChoice(choices: GuideField[][]): GuideField[] {
+  const all = choices.flat();
+  return onceEach(all).map((field) => {
+    const same = all.filter(({ name }) => name === field.name);
+    return {
+      ...field,
+      type: joined(
+        same.map(({ type }) => type),
+        same.every(({ type }) => type.startsWith('"')) ? ' | ' : ' or ',
+      ),
+      isRequired: same.length === choices.length && same.every(({ isRequired }) => isRequired),
+      words: joined(
+        same.map(({ words }) => words),
+        ', or ',
+      ),
+    };
   });
 }
+
+const onceEach = (fields: GuideField[]): GuideField[] =>
+  fields.filter(({ name }, at) => fields.findIndex((field) => field.name === name) === at);
 
 /** What a body or an answer is: its fields, or the one shape that it consists of. */
 function contentOf(schema: Schema | undefined): GuideField[] {

@@ -27,9 +27,9 @@ export default async function ApiGuidePage({
         title="API"
         context={
           <>
-            each address of this server, made from the description at{' '}
+            Each address of this server, made from the description at{' '}
             <a href="/api/v1/openapi.json">/api/v1/openapi.json</a>; the{' '}
-            <Link href="/api-guide/shapes">shapes</Link> of bodies and answers
+            <Link href="/api-guide/shapes">shapes</Link> of bodies and answers.
           </>
         }
       />

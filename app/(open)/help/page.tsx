@@ -9,7 +9,7 @@ export default function HelpPage() {
     <>
       <PageTitle
         title="Help"
-        context="each word and each quantity: what it means, its formula, its source"
+        context="Each word and each quantity: what it means, its formula, its source"
       />
       <HelpContents />
     </>

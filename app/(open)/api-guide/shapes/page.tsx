@@ -13,7 +13,7 @@ export default function ApiShapesPage() {
       <PageTitle
         title="Shapes"
         crumbs={[{ href: '/api-guide', label: 'API' }, { label: 'Shapes' }]}
-        context="what bodies and answers are made of, by name"
+        context="What bodies and answers are made of, by name"
       />
       <div className="grid gap-x-14 gap-y-10 xl:grid-cols-2">
         {guideShapes(apiGuide().document).map(({ name, fields }) => (
