@@ -134,6 +134,31 @@ function wrongTypeCode(expected: string): string {
 const inBody: Place = (path) => (path.length === 0 ? 'body' : path.map(String).join('.'));
 const inQuery: Place = (path) => `query "${path.map(String).join('.')}"`;
 
+/** No schema nests deeper; what does would end the stack of whoever walks through it. */
+const DEEPEST = 64;
+
+const isUnstorable = (text: string) => text.includes('\u0000') || /\p{Cs}/u.test(text);
+
+/** What no text of the database can hold: U+0000, and half of a surrogate pair. */
+function unstorable(value: unknown, place: Place, path: PropertyKey[] = []): Fault[] {
+  const item = path.length === 0 ? 'body' : place(path);
+  if (typeof value === 'string') {
+    if (!isUnstorable(value)) return [];
+    const found = isSecret(path) ? hide(value) : quote(value.replace(/\p{Cs}/gu, '\ufffd'));
+    const code = value.includes('\u0000') ? 'control-character' : 'not-utf8';
+    return [{ code, item, found, expected: 'text that UTF-8 can write, without U+0000' }];
+  }
+  if (typeof value !== 'object' || value === null) return [];
+  if (path.length === DEEPEST) {
+    const found = `more than ${DEEPEST} levels, one within the other`;
+    return [{ code: 'schema', item: 'body', found, expected: 'fewer' }];
+  }
+  return Object.entries(value).flatMap(([key, member]) => [
+    ...(isUnstorable(key) ? unstorable(key, place, path) : []),
+    ...unstorable(member, place, [...path, key]),
+  ]);
+}
+
 function refuse(error: z.ZodError, root: unknown, place: Place, status: number): never {
   const faults = error.issues.flatMap((issue) => faultsOf(issue, root, place));
   const isMalformed = faults.some((fault) => fault.code === 'key-unknown');
@@ -150,6 +175,10 @@ function refuse(error: z.ZodError, root: unknown, place: Place, status: number):
  *   is not known, else 422
  */
 export function parseInput<T>(schema: ZodType<T>, value: unknown): T {
+  const unwritable = unstorable(value, inBody);
+  if (unwritable.length > 0) {
+    throw new InputError(unwritable.slice(0, 100), { count: unwritable.length });
+  }
   const parsed = schema.safeParse(value);
   return parsed.success ? parsed.data : refuse(parsed.error, value, inBody, 422);
 }
@@ -189,6 +218,8 @@ export function parseQuery<T>(schema: ZodType<T>, search: URLSearchParams): T {
     }
     given[key] = value;
   }
+  const unwritable = unstorable({ ...given }, inQuery);
+  if (unwritable.length > 0) throw new InputError(unwritable.slice(0, 100), { status: 400 });
   const parsed = schema.safeParse({ ...given });
   if (parsed.success) return parsed.data;
   const faults = parsed.error.issues

@@ -41,7 +41,7 @@ export const uploadSettingsSchema = z.strictObject({
   /** Systems: number of the population of which they are a new version. */
   versionOf: z.number().int().positive().optional(),
   /** Items of the file that are left out: a target's name. */
-  leaveOut: z.array(z.string()).optional(),
+  leaveOut: z.array(z.string().max(300)).optional(),
 });
 export type UploadSettings = z.infer<typeof uploadSettingsSchema>;
 

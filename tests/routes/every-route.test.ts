@@ -37,7 +37,9 @@ let team: { collaboration: TestCollaboration; people: { owner: TestPerson; stude
 type Headers = Record<string, string>;
 let owner: { token: Headers; cookie: string };
 let outsider: { token: Headers; cookie: string };
-/** Tokens and a session that were good once. */
+/** A member whose access rests in this collaboration alone. */
+let absentee: { token: Headers; cookie: string };
+/** Tokens and sessions that were good once, or whose person is suspended. */
 let lapsed: Headers[];
 const tokenWithout = new Map<string, Headers>();
 
@@ -55,7 +57,23 @@ beforeAll(async () => {
   const past = await tokenOf(people.owner, collaboration, undefined, new Date(Date.now() - 1000));
   const session = await sessionCookieOf(people.owner);
   await query('delete from session where id = $1', [session.sessionId]);
-  lapsed = [bearer(past), bearer('not-a-token'), { cookie: session.cookie, origin: webAddress() }];
+  const old = await sessionCookieOf(people.owner);
+  await query("update session set expires_at = now() - interval '1 s' where id = $1", [
+    old.sessionId,
+  ]);
+  const resting = await createPerson();
+  await addMember(collaboration, resting, ['owner']);
+  const rested = await signedIn(resting, collaboration);
+  await query('update person set suspended_at = now() where id = $1', [resting.id]);
+  const cookies = [session.cookie, old.cookie, rested.cookie];
+  lapsed = [
+    ...[bearer(past), bearer('not-a-token'), rested.token],
+    ...cookies.map((cookie) => ({ cookie, origin: webAddress() })),
+  ];
+  const away = await createPerson();
+  const membership = await addMember(collaboration, away, ['owner']);
+  absentee = await signedIn(away, collaboration);
+  await query('update member set suspended_at = now() where id = $1', [membership]);
   for (const access of ['read', 'write', 'run'] as const) {
     const scopes = (['read', 'write', 'run'] as const).filter((scope) => scope !== access);
     tokenWithout.set(access, bearer(await tokenOf(people.owner, collaboration, scopes)));
@@ -90,7 +108,8 @@ const statusOf = async (...asked: Parameters<typeof ask>) => (await ask(...asked
 
 const oddIds = ['1 or 1=1', "'; drop table star", '9'.repeat(400), '..', '\u0000', '💫', '-1'];
 const deep = JSON.parse(`${'['.repeat(500)}${']'.repeat(500)}`);
-const oddBodies = [null, [], 'text', 7, deep, { constructor: 1, __proto__: { a: 1 } }];
+const keys = { 'a\u0000': 1, '\ud800': 1 };
+const oddBodies = [null, [], 'text', 7, deep, keys, { constructor: 1, __proto__: { a: 1 } }];
 const named = ours.map(
   (route) => [`${route.method} ${route.path.slice(home.length)}`, route] as const,
 );
@@ -100,10 +119,13 @@ describe.each(named)('of a collaboration: %s', (_, route) => {
     for (const headers of [{}, ...lapsed]) expect(await statusOf(route, headers)).toBe(401);
   });
 
-  it('does not exist for an outsider, by token or by session', async () => {
+  it('does not exist for an outsider or a suspended member, by token or by session', async () => {
+    for (const { cookie } of [outsider, absentee]) {
+      expect(await statusOf(route, { cookie, origin: webAddress() })).toBe(404);
+    }
     const byToken = await ask(route, outsider.token);
-    const bySession = await ask(route, { cookie: outsider.cookie, origin: webAddress() });
-    expect([byToken.status, bySession.status]).toEqual([404, 404]);
+    expect(byToken.status).toBe(404);
+    expect(await statusOf(route, absentee.token)).toBe(401);
     const absent = await ask(route, outsider.token, { id: () => 'no-such-thing' });
     const words = ({ title, detail }: { title: string; detail: string }) => ({ title, detail });
     expect(words(await absent.json())).toEqual(words(await byToken.json()));
@@ -136,6 +158,52 @@ describe.each(named)('of a collaboration: %s', (_, route) => {
       if (route.body) expect(response.status).toBeGreaterThanOrEqual(400);
     }
   });
+});
+
+const personal = apiRoutes
+  .filter((route) => !ours.includes(route) && route.access !== 'open')
+  .map((route) => [`${route.method} ${route.path}`, route] as const);
+
+describe.each(personal)('of a person: %s', (_, route) => {
+  it('is closed to nobody, and to what has ended or was made up', async () => {
+    for (const headers of [{}, ...lapsed]) expect(await statusOf(route, headers)).toBe(401);
+  });
+
+  it('takes no token where a session is asked for, and no write that another site sends', async () => {
+    if (route.access === 'session') expect(await statusOf(route, owner.token)).toBe(403);
+    if (!isWrite(route)) return;
+    const { cookie } = owner;
+    for (const origin of ['https://elsewhere.example', 'null', '']) {
+      expect(await statusOf(route, { cookie, ...(origin ? { origin } : {}) })).toBe(403);
+    }
+  });
+
+  it('answers without a fault of the server, whatever ids and body are sent', async () => {
+    if (/deletion|sessions|password$|second-factor|demonstration/.test(route.path)) return;
+    const headers = { cookie: owner.cookie, origin: webAddress() };
+    for (const body of oddBodies) {
+      expect(await statusOf(route, headers, { body, id: () => oddIds[5] })).toBeLessThan(500);
+    }
+  });
+});
+
+const open = apiRoutes
+  .filter(({ access }) => access === 'open')
+  .map((route) => [`${route.method} ${route.path}`, route] as const);
+
+it.each(open)('open to all, answers oddities without a fault: %s', async (_, route) => {
+  for (const odd of oddIds) {
+    await database().query('delete from rate_limit');
+    const status = await statusOf(route, {}, { id: () => odd });
+    expect(status, odd).toBeLessThan(500);
+  }
+  if (!route.body) return;
+  for (const body of oddBodies) {
+    await database().query('delete from rate_limit');
+    const { status } = await ask(route, {}, { body });
+    expect(status, JSON.stringify(body).slice(0, 40)).toBeLessThan(500);
+    expect(status).toBeGreaterThanOrEqual(400);
+  }
 });
 
 it('a person who was removed is an outsider at the next request', async () => {
