@@ -1,3 +1,4 @@
+import { AsyncLocalStorage } from 'node:async_hooks';
 import { Sequelize, type Transaction } from 'sequelize';
 import { config } from '@/lib/config';
 import { AccessTokenRow, defineAccessToken } from './access-token';
@@ -159,6 +160,7 @@ function defineModels(sequelize: Sequelize): void {
 }
 
 function open(databaseUrl: string, poolSize: number): Sequelize {
+  joinWholeRequest(Sequelize);
   return new Sequelize(databaseUrl, {
     dialect: 'postgres',
     logging: false,
@@ -167,7 +169,26 @@ function open(databaseUrl: string, poolSize: number): Sequelize {
   });
 }
 
-const holder = globalThis as typeof globalThis & { rareboundDatabase?: Sequelize };
+const holder = globalThis as typeof globalThis & {
+  rareboundDatabase?: Sequelize;
+  rareboundTransaction?: AsyncLocalStorage<Transaction>;
+};
+
+/** The transaction that a request as a whole runs in, where it has one. */
+function wholeRequest(): AsyncLocalStorage<Transaction> {
+  holder.rareboundTransaction ??= new AsyncLocalStorage<Transaction>();
+  return holder.rareboundTransaction;
+}
+
+/** Lets a statement that names no transaction join that of its request; nothing else sets one. */
+function joinWholeRequest({ useCLS: takeContext }: Pick<typeof Sequelize, 'useCLS'>): void {
+  takeContext({
+    get: (key: string) => (key === 'transaction' ? wholeRequest().getStore() : undefined),
+    set: () => undefined,
+    bind: <F>(work: F) => work,
+    run: (work: (context: object) => unknown) => work({}),
+  });
+}
 
 /** The connection on which this copy of the module has defined its models. */
 let definedOn: Sequelize | undefined;
@@ -193,7 +214,14 @@ export async function closeDatabase(): Promise<void> {
   holder.rareboundDatabase = undefined;
 }
 
-/** One transaction per use case. */
+/** One transaction per use case; within `inOneTransaction` it is the one that is open. */
 export function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
-  return database().transaction(work);
+  const open = wholeRequest().getStore();
+  return open ? work(open) : database().transaction(work);
+}
+
+/** Everything that the work reads and writes, on one connection, all or nothing. */
+export function inOneTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
+  const storage = wholeRequest();
+  return database().transaction((transaction) => storage.run(transaction, () => work(transaction)));
 }

@@ -72,7 +72,7 @@ const rules = [
   ],
   [
     'Unchanged',
-    'JSON that is read carries an ETag. If-None-Match answers 304 while it is the same; If-Match on PATCH and DELETE answers 412 once it is not. It is compared just before the change is made.',
+    'JSON that is read carries an ETag. If-None-Match answers 304 while it is the same; If-Match on PATCH and DELETE answers 412 once it is not. Comparison and change are one step, so that of two people who read the same state one is refused.',
   ],
   [
     'Sent twice',

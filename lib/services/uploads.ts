@@ -229,11 +229,12 @@ export async function changeUpload(
   const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
   const read = await dryRun(actor, source, () => loadParts(row));
   const { report } = read;
-  await row.update({
-    settings: read.settings,
-    report: report as unknown as Record<string, unknown>,
-  });
-  return describeUpload(row);
+  const [changed] = await UploadRow.update(
+    { settings: read.settings, report: report as unknown as Record<string, unknown> },
+    { where: { id: row.id, state: 'read' } },
+  );
+  if (changed === 0) throw new Conflict('This file was stored or withdrawn meanwhile');
+  return describeUpload(await row.reload());
 }
 
 /** Stores all that the file says in one transaction, and starts the maps that follow from it. */

@@ -10,6 +10,10 @@ import {
   GET as readTeam,
   PATCH as renameTeam,
 } from '@/app/api/v1/collaborations/[collaboration]/route';
+import {
+  PATCH as changeSettings,
+  GET as readSettings,
+} from '@/app/api/v1/collaborations/[collaboration]/settings/route';
 import { GET as listStudies } from '@/app/api/v1/collaborations/[collaboration]/studies/route';
 import { collaborationRoute } from '@/app/api/v1/handler';
 import { POST as signUp } from '@/app/api/v1/sign-up/route';
@@ -110,6 +114,34 @@ describe('an ETag', () => {
       headers: { 'if-match': etag },
     });
     expect(absent.status).toBe(404);
+  });
+
+  it('lets one of two through that change the same thing at once, whichever address they use', async () => {
+    const etag = (await ask(readTeam)).headers.get('etag') ?? '';
+    const settings = (await ask(readSettings)).headers.get('etag') ?? '';
+    const names = ['One', 'Two', 'Three', 'Four', 'Five', 'Six'];
+    const answers = await Promise.all(
+      names.map((name, i) =>
+        ask(i % 2 === 0 ? renameTeam : changeSettings, {
+          method: 'PATCH',
+          body: { name },
+          headers: { 'if-match': i % 2 === 0 ? etag : settings },
+        }),
+      ),
+    );
+    const statuses = answers.map(({ status }) => status);
+    expect(statuses.filter((status) => status === 200)).toHaveLength(1);
+    expect(statuses.filter((status) => status === 412)).toHaveLength(5);
+    const won = names[statuses.indexOf(200)];
+    expect((await (await ask(readTeam)).json()).name).toBe(won);
+  });
+
+  it('leaves nothing behind of a change that is refused after its comparison', async () => {
+    const etag = (await ask(readSettings)).headers.get('etag') ?? '';
+    const headers = { 'if-match': etag };
+    const body = { name: 'Half a change', leadAnalysis: 'A-99' };
+    expect((await ask(changeSettings, { method: 'PATCH', body, headers })).status).toBe(404);
+    expect((await ask(readSettings)).headers.get('etag')).toBe(etag);
   });
 
   it('matches nowhere where none is given', async () => {

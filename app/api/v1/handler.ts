@@ -5,7 +5,7 @@ import { knownPerson, requireSameOrigin } from '@/lib/access/requests';
 import { AccessError, LabError, NotSignedIn } from '@/lib/errors';
 import { parseInput, parseQuery } from '@/lib/schemas/input';
 import { answer, type Seen } from './answer';
-import { answerKept, refuseKey, requireUnchanged } from './conditions';
+import { answerKept, oneAfterAnother, refuseKey, requireUnchanged } from './conditions';
 import { fromCursor, nextLink } from './paging';
 import { readJson, requireJsonType } from './read-body';
 
@@ -150,9 +150,13 @@ export function collaborationRoute<B = undefined, Q = undefined>(
       await countOwn(options, person.personId, seen);
       if (!keepsAnswer) refuseKey(request);
       const asked = { ...(await readRequest(request, context, options)), actor };
-      await requireUnchanged(request, current && (() => current(asked)));
       if (paged !== undefined) asked.query = fromCursor(asked.query);
-      const result = await answerKept(request, asked, options.status ?? 200, () => work(asked));
+      const perform = async () => {
+        await requireUnchanged(request, current && (() => current(asked)));
+        return answerKept(request, asked, options.status ?? 200, () => work(asked));
+      };
+      const isGuarded = current !== undefined && isWrite(request);
+      const result = await (isGuarded ? oneAfterAnother(actor, asked.params, perform) : perform());
       if (paged !== undefined) {
         seen.link = nextLink(request, asked.query, result, paged) ?? undefined;
       }
