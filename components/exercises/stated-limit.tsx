@@ -1,4 +1,4 @@
-import { FormulaWords } from '@/components/studies/formula-words';
+import { FormulaWords } from '@/components/ui/formula-words';
 import type { StatedLimit as Stated } from '@/lib/schemas/exercises';
 
 /** A limit as its sentence, its conditions one press away. */

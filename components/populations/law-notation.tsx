@@ -1,4 +1,4 @@
-import { FormulaWords } from '@/components/studies/formula-words';
+import { FormulaWords } from '@/components/ui/formula-words';
 import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { describePopulation } from '@/lib/inference';
 import { type AxisConvention, fromLogIndex } from '@/lib/population';

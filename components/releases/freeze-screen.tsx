@@ -4,6 +4,7 @@ import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { bundleAddress, freezeRun } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
+import { FormulaWords } from '@/components/ui/formula-words';
 import { Icon } from '@/components/ui/icon';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -162,7 +163,9 @@ export function FreezeScreen(props: FreezeScreenProps) {
           </p>
           <ul className="mt-3 max-w-[72ch] list-disc pl-5 text-ink3 text-note">
             {conditions.map((condition) => (
-              <li key={condition}>{condition}</li>
+              <li key={condition}>
+                <FormulaWords text={condition} />
+              </li>
             ))}
           </ul>
           {frozen && (

@@ -1,3 +1,4 @@
+import { FormulaWords } from '@/components/ui/formula-words';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -118,7 +119,7 @@ function RunParts({ run, number }: { run: ShownRun; number: number }) {
           }
         />
         <p className="max-w-[72ch] whitespace-pre-wrap text-ink2 [overflow-wrap:anywhere]">
-          {run.methods.text.trim()}
+          <FormulaWords text={run.methods.text.trim()} />
         </p>
       </section>
     </>

@@ -3,7 +3,7 @@
 import { PosteriorChart } from '@/components/charts/posterior-chart';
 import type { RateCurve } from '@/components/charts/rate-curve';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
-import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
+import { Conditions, conditionRow, Plate, StatementNumber } from '@/components/ui/plate';
 import { describeLevel, describePrior } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { ShownRun } from '@/lib/schemas/release-page';
@@ -14,12 +14,6 @@ export const curveOf = ({ curve }: RateAnswer): RateCurve => ({
   density: Float64Array.from(curve.density),
   cumulative: Float64Array.from(curve.cumulative),
 });
-
-/** 'label: text' as a line in two columns. */
-function asRow(condition: string) {
-  const [name, ...rest] = condition.split(': ');
-  return { name, value: rest.join(': ') };
-}
 
 /** The limit as a sentence, its posterior, and every condition as the run stated it. */
 export function ReleasePlate({ run }: { run: ShownRun }) {
@@ -78,7 +72,7 @@ export function ReleasePlate({ run }: { run: ShownRun }) {
         </div>
       </div>
       <div className="mt-4 border-rule border-t pt-3.5">
-        <Conditions rows={statement.conditions.map(asRow)} />
+        <Conditions rows={statement.conditions.map(conditionRow)} />
       </div>
     </Plate>
   );

@@ -1,3 +1,4 @@
+import { FormulaWords } from '@/components/ui/formula-words';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import type { RunResult, RunView } from '@/lib/schemas/runs';
@@ -100,7 +101,9 @@ export function ProvenanceDetails({ run, result }: { run: RunView; result: RunRe
       </dl>
       <ul className="mt-3 grid gap-1 text-ink2">
         {result.statement.conditions.map((condition) => (
-          <li key={condition}>{condition}</li>
+          <li key={condition}>
+            <FormulaWords text={condition} />
+          </li>
         ))}
       </ul>
     </details>

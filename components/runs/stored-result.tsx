@@ -9,7 +9,7 @@ import { CalibrationCheck } from '@/components/studies/calibration/calibration-c
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
-import { Conditions, Plate } from '@/components/ui/plate';
+import { Conditions, conditionRow, Plate } from '@/components/ui/plate';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunView } from '@/lib/schemas/runs';
 import { NoRunPlate } from './no-run-plate';
@@ -77,7 +77,7 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
         <>
           <Plate>
             <p className="statement mb-5">{run.result.statement.sentence}</p>
-            <Conditions rows={run.result.statement.conditions.map(asRow)} />
+            <Conditions rows={run.result.statement.conditions.map(conditionRow)} />
             <div className="mt-2 -ml-1">
               <RecordedStatementCopy collaboration={collaboration} runId={run.id} />
             </div>
@@ -100,10 +100,4 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
       )}
     </>
   );
-}
-
-/** 'label: text' as a line in two columns. */
-function asRow(condition: string) {
-  const [name, ...rest] = condition.split(': ');
-  return { name, value: rest.join(': ') };
 }

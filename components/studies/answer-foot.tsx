@@ -1,19 +1,14 @@
 import { fingerprint, formatDay } from '@/components/runs/time-words';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
-import { Conditions } from '@/components/ui/plate';
+import { Conditions, conditionRow } from '@/components/ui/plate';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { StudyView } from '@/lib/schemas/studies';
-import { FormulaWords } from './formula-words';
 import type { AskedRun } from './kind-entry';
 
 /** The run's own sentence and conditions: no limit is shown without them. */
 export function AnswerConditions({ asked, settings }: { asked: AskedRun; settings: string }) {
   const { statement } = asked.result;
-  const rows = statement.conditions.map((condition) => {
-    const at = condition.indexOf(': ');
-    return { name: condition.slice(0, at), value: <FormulaWords text={condition.slice(at + 2)} /> };
-  });
   return (
     <section>
       <SectionOpener
@@ -36,7 +31,7 @@ export function AnswerConditions({ asked, settings }: { asked: AskedRun; setting
               name: 'Sample',
               value: `${asked.inputs.surveys.map(({ name }) => name).join(', ')}: ${asked.result.stars} stars of ${asked.result.entries} entries`,
             },
-            ...rows,
+            ...statement.conditions.map(conditionRow),
           ]}
         />
       </div>

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { HelpMark } from '@/components/help/help-mark';
 import type { HelpWord } from '@/lib/help';
+import { FormulaWords } from './formula-words';
 
 /** The one dark surface of the light theme: holds one statement, at most one a page. */
 export function Plate({
@@ -55,6 +56,12 @@ export interface ConditionRow {
   value: ReactNode;
   /** The word that a mark behind the name explains. */
   help?: HelpWord;
+}
+
+/** A condition that a statement lists, "label: text", as a line in two columns. */
+export function conditionRow(condition: string): ConditionRow {
+  const at = condition.indexOf(': ');
+  return { name: condition.slice(0, at), value: <FormulaWords text={condition.slice(at + 2)} /> };
 }
 
 /** What the number rests on: name and value, line by line. */

@@ -47,8 +47,9 @@ export interface FinishedRun {
   inputsDigest: string | null;
   /** Something of the surveys came after the run read them. */
   hasOlderInputs: boolean;
-  /** Absent while the run is a draft. */
+  /** The newest release that holds it; absent before it is published. */
   release?: ReleaseFacts | undefined;
+  isFrozen?: boolean | undefined;
   recipe: AnalysisRecipe;
   population: Population;
   inputs: RunInputs;
@@ -57,9 +58,11 @@ export interface FinishedRun {
   engineVersion: string;
 }
 
-/** Every file of a run that no release froze says so. */
-export const stateOf = ({ release }: Pick<FinishedRun, 'release'>): string =>
-  release ? `release ${release.version}: ${release.title}` : 'draft';
+/** Every file of a run that nobody froze says so. */
+export function stateOf({ release, isFrozen }: Pick<FinishedRun, 'release' | 'isFrozen'>): string {
+  if (release) return `release ${release.version}: ${release.title}`;
+  return isFrozen ? 'frozen' : 'draft';
+}
 
 type Quantity = RunResult['quantity'];
 

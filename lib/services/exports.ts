@@ -13,6 +13,7 @@ import {
   runExports,
   withDefaults,
 } from './exports/registry';
+import { releaseOfRun } from './releases/facts';
 import { readRunFacts } from './run-facts';
 import { findRun, getRun } from './runs';
 
@@ -31,7 +32,7 @@ export async function getFinishedRun(actor: Actor, id: string): Promise<Finished
   }
   const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });
   const population = await PopulationRow.findByPk(recipe.populationId, { rejectOnEmpty: true });
-  const facts = await readRunFacts([analysis.id]);
+  const facts = (await readRunFacts([analysis.id])).find((fact) => fact.id === run.id);
   return {
     id: run.id,
     collaborationId: run.collaborationId,
@@ -41,7 +42,9 @@ export async function getFinishedRun(actor: Actor, id: string): Promise<Finished
     seed: run.seed,
     finishedAt: run.finishedAt?.toISOString() ?? null,
     inputsDigest: run.inputsDigest,
-    hasOlderInputs: facts.find((fact) => fact.id === run.id)?.hasOlderInputs ?? false,
+    hasOlderInputs: facts?.hasOlderInputs ?? false,
+    isFrozen: facts?.frozen != null,
+    release: facts?.frozen ? await releaseOfRun(run.id) : undefined,
     recipe,
     population: population.definition,
     inputs,
@@ -93,7 +96,7 @@ export async function listExports(actor: Actor, id: string): Promise<ExportList>
     files.push({ ...file, byteLength: size });
   }
   return {
-    state: run.release ? stateOf(run) : `draft, run ${run.number}`,
+    state: run.release ? stateOf(run) : `${stateOf(run)}, run ${run.number}`,
     files: [...files, { ...EVERYTHING, byteLength: null }],
     missing: [
       {

@@ -1,5 +1,7 @@
+import { GET as listFiles } from '@/app/api/v1/collaborations/[collaboration]/runs/[run]/exports/route';
 import type { RouteHandler } from '@/app/api/v1/handler';
 import { type Role, roleSchema } from '@/lib/schemas/common';
+import { exportListSchema } from '@/lib/schemas/exports';
 import { type ReleaseView, releaseSchema } from '@/lib/schemas/releases';
 import { CoolingTableRow, type RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
@@ -65,6 +67,8 @@ export interface ReleaseLab {
   second: RunRow;
   /** With the token of the team's member of that role. */
   ask(handler: RouteHandler, given: Asked): Promise<Response>;
+  /** What a run's files say of its standing. */
+  stateOfFiles(run: string): Promise<string>;
 }
 
 /** A collaboration with one member of each role and two finished runs. Needs a worker that runs. */
@@ -83,17 +87,22 @@ export async function openReleaseLab(): Promise<ReleaseLab> {
   const [run, second] = [await runAt(0.95), await runAt(0.9)];
   const tokens = new Map<Role, Record<string, string>>();
   for (const role of roles) tokens.set(role, bearer(await tokenOf(people[role], team)));
+  const ask: ReleaseLab['ask'] = (handler, { role, params = {}, body, method }) =>
+    call(handler, {
+      method: method ?? (body === undefined ? 'GET' : 'POST'),
+      headers: tokens.get(role),
+      params: { collaboration: team.slug, ...params },
+      body,
+    });
   return {
     team,
     run,
     second,
-    ask: (handler, { role, params = {}, body, method }) =>
-      call(handler, {
-        method: method ?? (body === undefined ? 'GET' : 'POST'),
-        headers: tokens.get(role),
-        params: { collaboration: team.slug, ...params },
-        body,
-      }),
+    ask,
+    stateOfFiles: async (id) => {
+      const answer = await ask(listFiles, { role: 'student', params: { run: id } });
+      return exportListSchema.parse(await answer.json()).state;
+    },
   };
 }
 

@@ -67,7 +67,7 @@ beforeAll(async () => {
 afterAll(killWorkers);
 
 const ask: ReleaseLab['ask'] = (handler, given) => lab.ask(handler, given);
-const post: ReleaseLab['ask'] = (handler, given) => lab.ask(handler, { method: 'POST', ...given });
+const post: ReleaseLab['ask'] = (handler, given) => ask(handler, { method: 'POST', ...given });
 const untilChecked = async () => {
   const shown = await view(await ask(getRelease, { role: 'student', params: { release: 'R-1' } }));
   await untilEnded(shown.job?.id ?? 'nothing is being checked');
@@ -107,6 +107,7 @@ describe('freezing a run', () => {
       expect((await post(freeze, given)).status).toBe(201);
       expect((await post(freeze, given)).status).toBe(409);
     }
+    expect(await lab.stateOfFiles(run.id)).toBe(`frozen, run ${run.number}`);
     const frozen = await FrozenRunRow.findOne({ where: { runId: run.id }, rejectOnEmpty: true });
     expect(sha256Hex(frozen.snapshot)).toBe(frozen.snapshotSha256);
     await expect(frozen.update({ reason: 'another' })).rejects.toThrow();
@@ -114,6 +115,8 @@ describe('freezing a run', () => {
 });
 
 describe('a release', () => {
+  const params = { release: 'R-1' };
+
   it('checks the iD of each author, and takes frozen runs of its collaboration only', async () => {
     const body = {
       title: 'Giant planets around five stars',
@@ -123,8 +126,8 @@ describe('a release', () => {
     };
     const wrong = { ...body, authors: [{ name: 'I. Marrand', orcid: '0000-0002-1825-0098' }] };
     expect((await post(createRelease, { role: 'author', body: wrong })).status).toBe(422);
-    const foreign = { ...body, runIds: [crypto.randomUUID()] };
-    expect((await post(createRelease, { role: 'author', body: foreign })).status).toBe(404);
+    const foreign = { role: 'author' as const, body: { ...body, runIds: [crypto.randomUUID()] } };
+    expect((await post(createRelease, foreign)).status).toBe(404);
     expect((await post(createRelease, { role: 'student', body })).status).toBe(403);
     release = await view(await post(createRelease, { role: 'author', body }));
     expect(release.key).toBe('R-1');
@@ -132,7 +135,6 @@ describe('a release', () => {
   });
 
   it('needs a statistician and somebody else than who froze it, then runs everything again', async () => {
-    const params = { release: 'R-1' };
     expect((await post(publish, { role: 'owner', params })).status).toBe(409);
     expect((await post(signOff, { role: 'author', params })).status).toBe(403);
     expect((await post(agree, { role: 'statistician', params })).status).toBe(403);
@@ -155,7 +157,6 @@ describe('a release', () => {
   });
 
   it('asks for both signatures again after a change', async () => {
-    const params = { release: 'R-1' };
     const body = { abstract: 'Five stars, one planet.' };
     const given = { role: 'author' as const, params, body, method: 'PATCH' };
     const changed = await view(await ask(updateRelease, given));
@@ -166,7 +167,6 @@ describe('a release', () => {
   });
 
   it('stops where the same inputs give other numbers, and says where', async () => {
-    const params = { release: 'R-1' };
     const stored = second.result;
     if (!stored) throw new Error('no result');
     const answer = { ...stored.answer, limit: stored.answer.limit * (1 + 2e-6) };
@@ -193,9 +193,9 @@ describe('a release', () => {
   });
 
   it('is public once it is published: a page, files with their checksums, and no change', async () => {
-    const params = { release: 'R-1' };
     const published = await view(await post(publish, { role: 'owner', params }));
     expect(published.state).toBe('published');
+    expect(await lab.stateOfFiles(run.id)).toBe('release 1: Giant planets around five stars');
     const page = await findPublicRelease(release.code);
     expect(page.runs.map(({ result }) => result.statement.sentence)).toEqual(
       [run, second].map(({ result }) => result?.statement.sentence),
@@ -206,9 +206,8 @@ describe('a release', () => {
       expect(file.status).toBe(200);
       expect(sha256Hex(Buffer.from(await file.arrayBuffer()))).toBe(sha256);
     }
-    const body = { title: 'Another title' };
-    const change = await ask(updateRelease, { role: 'author', params, body, method: 'PATCH' });
-    expect(change.status).toBe(409);
+    const change = { method: 'PATCH', body: { title: 'Another title' } };
+    expect((await ask(updateRelease, { role: 'author', params, ...change })).status).toBe(409);
   });
 
   it('gives a bundle whose every file has the checksum that it states', async () => {
@@ -265,6 +264,7 @@ describe('withdrawal', () => {
     expect((await post(withdraw, { role: 'author', params, body })).status).toBe(403);
     await view(await post(withdraw, { role: 'owner', params, body }));
     const page = await findPublicRelease(release.code);
+    expect(await lab.stateOfFiles(run.id)).toBe(`frozen, run ${run.number}`);
     expect([page.withdrawn?.reason, page.runs, page.files]).toEqual([body.reason, [], []]);
     const file = await call(getFile, { params: { code: release.code, file: 'R-1-bundle.zip' } });
     expect(file.status).toBe(404);

@@ -2,11 +2,11 @@
 
 import Link from 'next/link';
 import { EvidenceChart, formatLogB } from '@/components/charts/evidence-chart';
+import { FormulaWords } from '@/components/ui/formula-words';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
-import { FormulaWords } from '../formula-words';
 import type { AnswerProps } from '../kind-entry';
 import { evidenceInWords, evidenceSource, evidenceSteps } from './comparison-words';
 

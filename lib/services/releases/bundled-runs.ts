@@ -41,7 +41,7 @@ export async function bundledRun(
   const { run: made } = readRecipe(content);
   return {
     folder: `${finished.analysis}-run-${finished.number}`,
-    run: release ? { ...finished, release } : finished,
+    run: { ...finished, release },
     by: made.by,
     startedAt: made.startedAt,
     content,

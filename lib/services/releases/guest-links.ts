@@ -22,9 +22,9 @@ import {
   RunRow,
 } from '@/models';
 import { recordAudit } from '../audit';
+import { addressOfRelease } from './address';
 import { findRelease } from './describe';
 import { showFrozenRun, showRelease } from './public-page';
-import { addressOfRelease } from './sign';
 
 const DAY_MS = 86_400_000;
 /** 240 random bits need no slow hash. */

@@ -22,7 +22,8 @@ import { type FinishedRun, type ReleaseFacts, statedRange } from '../export-limi
 import { writeMethods } from '../exports/methods';
 import { findTombstone } from '../leaving/tombstones';
 import { studyNames } from '../study-words';
-import { addressOfRelease } from './sign';
+import { addressOfRelease } from './address';
+import { factsOfRelease } from './facts';
 
 async function showRun(runId: string, release?: ReleaseFacts): Promise<ShownRun> {
   const run = await RunRow.findByPk(runId, { rejectOnEmpty: true });
@@ -104,14 +105,6 @@ async function neighbours(row: ReleaseRow) {
   return { replaces: ref(before), replacedBy: ref(after) };
 }
 
-/** What the words of a published release say of it; none of a draft. */
-function factsOf(row: ReleaseRow): ReleaseFacts | undefined {
-  const { publishedAt, title, number: version, licence, authors, code } = row;
-  if (!publishedAt) return undefined;
-  const year = publishedAt.getUTCFullYear();
-  return { title, version, licence, authors, year, address: addressOfRelease(code) };
-}
-
 /** The page of a release: published, or a draft for whoever holds a link to it. */
 export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
   const links = await ReleaseRunRow.findAll({
@@ -120,7 +113,7 @@ export async function showRelease(row: ReleaseRow): Promise<ReleasePage> {
   });
   const runs: ShownRun[] = [];
   if (!row.withdrawnAt) {
-    for (const { runId } of links) runs.push(await showRun(runId, factsOf(row)));
+    for (const { runId } of links) runs.push(await showRun(runId, factsOfRelease(row)));
   }
   const files = row.withdrawnAt
     ? []

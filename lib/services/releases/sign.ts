@@ -1,21 +1,18 @@
 import { type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { config } from '@/lib/config';
 import { AccessError, Conflict, NotFound } from '@/lib/errors';
 import { enqueueVerification } from '@/lib/queue/enqueue';
 import type { ReleaseView } from '@/lib/schemas/releases';
 import { inTransaction, JobRow, ReleaseFileRow, ReleaseRow, ReleaseRunRow } from '@/models';
 import { sha256Hex } from '@/models/digest';
 import { recordAudit } from '../audit';
+import { addressOfRelease } from './address';
 import { bundledRun } from './bundled-runs';
 import { describeReleases, findRelease, getRelease, OWN_FREEZE, stateOfRelease } from './describe';
 import { lockDraft } from './draft';
 import { makeReleaseFiles, type ReleaseToWrite } from './files';
 import { tellMembers, tellOfSignature } from './mails';
-
-export const addressOfRelease = (code: string) =>
-  `${new URL(config().webAddress).origin}/r/${code}`;
 
 /** Once both have signed, everything is run again from its inputs before anybody may publish it. */
 async function checkOnceSigned(

@@ -1,4 +1,4 @@
-import { ProportionalTo } from '@/components/ui/notation';
+import { ProportionalTo } from './notation';
 
 /** A sentence that holds a law as text, "dN/dM ∝ M^−1.3": the sign is drawn, the index raised. */
 export function FormulaWords({ text }: { text: string }) {
