@@ -120,7 +120,7 @@ function queryOf({ query }: ApiRoute): string {
  */
 export function exampleRequest(one: ApiRoute, origin: string): ExampleRequest | null {
   if (one.access === 'session') return null;
-  const named = { ...parts, file: exampleFiles[one.path] };
+  const named: Record<string, string | undefined> = { ...parts, file: exampleFiles[one.path] };
   const address = one.path.replace(/\{(\w+)\}/g, (_, name) => named[name] ?? ID);
   const body =
     one.body && (exampleBodies[`${one.method} ${one.path}`] ?? exampleOf(shapeOf(one.body)));

@@ -34,7 +34,7 @@ export const levelSchema = z
 /** From the Link header of the page before; its inside is nobody's business. */
 export const cursorSchema = z
   .string()
-  .max(60)
+  .max(100)
   .regex(/^[A-Za-z0-9_-]+$/, 'the cursor of a Link header');
 
 /** Lists are read page by page: at most 500 rows, from an offset or a cursor. */

@@ -10,6 +10,7 @@ import {
   auditEntrySchema,
 } from '@/lib/schemas/audit';
 import { AuditEntryRow, database, inTransaction } from '@/models';
+import { behindRow, type PageAsked } from './behind-row';
 import { nameItems } from './item-names';
 
 /** Whom an entry is about: a member within a collaboration, or a person outside of any. */
@@ -74,20 +75,28 @@ const bindOf = (actor: Actor, { action, item, person, from, to }: Filters) => [
   to ?? null,
 ];
 
+const NEWEST = {
+  table: 'audit_entry',
+  keys: (row: string) => [`${row}.created_at`, `${row}.id`],
+  direction: 'down',
+} as const;
+
 async function readEntries(
   actor: Actor,
   filters: Filters,
-  limit: number | null,
-  offset: number,
+  { limit, offset, after }: Omit<PageAsked, 'limit'> & { limit: number | null },
   transaction?: Transaction,
 ): Promise<AuditEntryView[]> {
+  const { collaborationId } = actor;
+  const behind =
+    after === undefined ? null : await behindRow(NEWEST, { name: 'a', collaborationId, after });
   const rows = await database().query<Omit<AuditEntryView, 'at'> & { at: Date }>(
     `select a.id::text as id, a.created_at as at,
             coalesce(p.name, 'somebody who left') as who,
             a.person_id as "personId", a.action, a.item_kind as "itemKind", a.item_id as "itemId",
             a.summary, a.address, a.details
        from audit_entry a left join person p on p.id = a.person_id
-      where ${CONDITIONS} order by a.created_at desc, a.id desc limit $7 offset $8`,
+      where ${CONDITIONS} ${behind ? `and ${behind.val}` : ''} order by a.created_at desc, a.id desc limit $7 offset $8`,
     {
       bind: [...bindOf(actor, filters), limit, offset],
       type: QueryTypes.SELECT,
@@ -110,14 +119,17 @@ async function readEntries(
 }
 
 /** Entries of the collaboration, newest first. */
-export async function listAudit(actor: Actor, query: AuditQuery): Promise<AuditPage> {
+export async function listAudit(
+  actor: Actor,
+  query: AuditQuery & Pick<PageAsked, 'after'>,
+): Promise<AuditPage> {
   demand(actor, 'read-audit');
   const [counted] = await database().query<{ total: number }>(
     `select count(*)::int as total from audit_entry a where ${CONDITIONS}`,
     { bind: bindOf(actor, query), type: QueryTypes.SELECT },
   );
   return {
-    entries: await readEntries(actor, query, query.limit, query.offset),
+    entries: await readEntries(actor, query, query),
     total: counted.total,
   };
 }
@@ -175,7 +187,7 @@ export async function exportAudit(
 ): Promise<{ fileName: string; contentType: string; text: string }> {
   demand(actor, 'read-audit');
   return inTransaction(async (transaction) => {
-    const entries = await readEntries(actor, filters, null, 0, transaction);
+    const entries = await readEntries(actor, filters, { limit: null, offset: 0 }, transaction);
     const item = { kind: 'collaboration', id: actor.collaborationId };
     const summary = `exported ${entries.length} entries of the log`;
     await recordAudit(actor, 'export', item, summary, transaction, { format, ...filters });

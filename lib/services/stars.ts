@@ -7,6 +7,7 @@ import { idSchema } from '@/lib/schemas/common';
 import type { StarList, StarPage, StarQuery, StarView } from '@/lib/schemas/stars';
 import type { MapSettings } from '@/lib/schemas/surveys';
 import { CompanionRow, ContrastCurveRow, database, StarRow, SurveyRow } from '@/models';
+import { type PageAsked, pageOf } from './behind-row';
 import {
   ageOf,
   conflictsOf,
@@ -122,11 +123,14 @@ function isAsked(star: StarRow, sky: Sky, { q, survey, only }: StarQuery): boole
 }
 
 /** Stars by name, each once, with what every survey says of it. */
-export async function listStars(actor: Actor, query: StarQuery): Promise<StarList> {
+export async function listStars(
+  actor: Actor,
+  query: StarQuery & Pick<PageAsked, 'after'>,
+): Promise<StarList> {
   demand(actor, 'read');
   const sky = await loadSky(actor.collaborationId);
   const asked = sky.stars.filter((star) => isAsked(star, sky, query));
-  const page = asked.slice(query.offset, query.offset + query.limit);
+  const page = pageOf(asked, query, ({ id }) => id);
   const shown = page.flatMap(({ id }) => sky.entriesOf.get(id) ?? []);
   const probabilities = await probabilitiesOf(actor.collaborationId, shown);
   const conflicts = sky.stars.map((star) => openConflicts(star, sky));

@@ -10,6 +10,7 @@ import { ENGINE_VERSION } from '@/lib/sensitivity';
 import { AnalysisRow, inTransaction, JobRow, PersonRow, RunRow, StudyRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import { recordAudit } from './audit';
+import { behindRow, type PageAsked } from './behind-row';
 import { describeJobs } from './jobs';
 import { findRun } from './runs';
 import { refuseUnanswerable } from './study-checks';
@@ -84,12 +85,23 @@ export async function listStudiesOfRun(
   return { studies: await summarise(rows) };
 }
 
+const NEWEST = {
+  table: 'study',
+  keys: (row: string) => [`${row}.created_at`, `${row}.id`],
+  direction: 'down',
+} as const;
+
 export async function listStudies(
   actor: Actor,
-  { kind, limit, offset }: StudyQuery,
+  { kind, limit, offset, after }: StudyQuery & PageAsked,
 ): Promise<{ studies: StudySummary[] }> {
   demand(actor, 'read');
-  const where: WhereOptions = { collaborationId: actor.collaborationId, ...(kind && { kind }) };
+  const { collaborationId } = actor;
+  const where: WhereOptions = {
+    collaborationId,
+    ...(kind && { kind }),
+    ...(after && { [Op.and]: await behindRow(NEWEST, { name: 'study', collaborationId, after }) }),
+  };
   const rows = await StudyRow.findAll({
     attributes: LISTED,
     where,

@@ -1,4 +1,4 @@
-import { QueryTypes } from 'sequelize';
+import { Op, QueryTypes } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
@@ -15,6 +15,7 @@ import {
 } from '@/models';
 import { wasChosenForCompanion } from '@/models/sample-selection';
 import { recordAudit } from './audit';
+import { behindRow, type PageAsked } from './behind-row';
 import { refuseShared } from './sharing/shared-surveys';
 import { currentYardstick, summariseMaps } from './survey-depth';
 import { findSurvey, isLead } from './surveys';
@@ -143,23 +144,38 @@ async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise
   );
 }
 
+const EASTWARD = {
+  table: 'target',
+  keys: (row: string) => [`coalesce(${row}.ra_deg, 'Infinity')`, `${row}.folded_name`, `${row}.id`],
+  direction: 'up',
+} as const;
+
 /** Targets of a survey by right ascension, then name. */
 export async function listTargets(
   actor: Actor,
   slug: string,
-  page: { limit: number; offset: number },
+  { limit, offset, after }: PageAsked,
 ): Promise<TargetList> {
   const survey = await findSurvey(actor, slug);
-  const { rows, count } = await TargetRow.findAndCountAll({
-    where: { surveyId: survey.id },
+  const { collaborationId } = survey;
+  const where = { surveyId: survey.id };
+  const rows = await TargetRow.findAll({
+    where: {
+      ...where,
+      ...(after && {
+        [Op.and]: await behindRow(EASTWARD, { name: 'target', collaborationId, after }),
+      }),
+    },
     order: [
       ['raDeg', 'ASC NULLS LAST'],
       ['foldedName', 'ASC'],
       ['id', 'ASC'],
     ],
-    ...page,
+    limit,
+    offset,
   });
-  return { targets: await describeTargets(survey, rows), total: count };
+  const total = await TargetRow.count({ where });
+  return { targets: await describeTargets(survey, rows), total };
 }
 
 async function findTarget(

@@ -14,6 +14,7 @@ import {
 } from '@/lib/schemas/uploads';
 import { database, inTransaction, PersonRow, SurveyRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
+import { behindRow, type PageAsked } from './behind-row';
 import { keepMapping } from './column-memory';
 import { dryRun, type Source } from './dry-run';
 import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
@@ -185,21 +186,35 @@ export async function getUpload(actor: Actor, id: string): Promise<UploadView> {
   return describeUpload((await findUpload(actor, id)).row);
 }
 
+const NEWEST = {
+  table: 'upload',
+  keys: (row: string) => [`${row}.created_at`, `${row}.id`],
+  direction: 'down',
+} as const;
+
 /** Uploads of the collaboration, or of one survey, newest first. */
 export async function listUploads(
   actor: Actor,
   slug: string | undefined,
-  page: { limit: number; offset: number },
+  { limit, offset, after }: PageAsked,
 ): Promise<UploadView[]> {
   demand(actor, 'read');
+  const { collaborationId } = actor;
   const survey = slug === undefined ? null : await findSurvey(actor, slug);
   const rows = await UploadRow.findAll({
-    where: { collaborationId: actor.collaborationId, ...(survey ? { surveyId: survey.id } : {}) },
+    where: {
+      collaborationId,
+      ...(survey && { surveyId: survey.id }),
+      ...(after && {
+        [Op.and]: await behindRow(NEWEST, { name: 'upload', collaborationId, after }),
+      }),
+    },
     order: [
       ['createdAt', 'DESC'],
       ['id', 'DESC'],
     ],
-    ...page,
+    limit,
+    offset,
   });
   return Promise.all(rows.map(async (row) => withoutPreview(await describeUpload(row))));
 }

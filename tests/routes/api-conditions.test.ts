@@ -251,7 +251,7 @@ describe('an Idempotency-Key', () => {
 describe('a long list', () => {
   const numbers = Array.from({ length: 7 }, (_, i) => i);
   const list = collaborationRoute(
-    { scope: 'read', query: pageSchema, paged: 'numbers' },
+    { scope: 'read', query: pageSchema, paged: 'numbers', movingOrder: true },
     async ({ query: { limit, offset } }) => ({ numbers: numbers.slice(offset, offset + limit) }),
   );
 

@@ -24,6 +24,8 @@ interface CollaborationOptions<B, Q> extends RouteOptions<B, Q> {
   scope: Scope;
   /** Key of the rows in the answer of a list that is read page by page. */
   paged?: string;
+  /** Its rows change places while it is read, so that no row can be gone on from. */
+  movingOrder?: boolean;
   /** What reading the same address answers: a write may ask that it has not changed (If-Match). */
   current?: (context: Omit<Asked<B, Q>, 'body'> & { actor: Actor }) => Promise<unknown>;
   /** The answer holds what is told once and stored nowhere in clear: no key keeps it. */
@@ -133,6 +135,7 @@ export function collaborationRoute<B = undefined, Q = undefined>(
   work: (context: Asked<B, Q> & { actor: Actor }) => Promise<unknown>,
 ): RouteHandler {
   const { scope, status, body, query, paged, current } = options;
+  const order = options.movingOrder ? 'moving' : 'kept';
   const keepsAnswer = !options.rawBody && !options.tellsSecret;
   const features = {
     isPaged: paged !== undefined,
@@ -158,7 +161,7 @@ export function collaborationRoute<B = undefined, Q = undefined>(
       const isGuarded = current !== undefined && isWrite(request);
       const result = await (isGuarded ? oneAfterAnother(actor, asked.params, perform) : perform());
       if (paged !== undefined) {
-        seen.link = nextLink(request, asked.query, result, paged) ?? undefined;
+        seen.link = nextLink(request, asked.query, result, paged, order) ?? undefined;
       }
       return result;
     }),

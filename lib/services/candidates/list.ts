@@ -13,6 +13,7 @@ import {
   SurveyRow,
   TargetRow,
 } from '@/models';
+import { type PageAsked, pageOf } from '../behind-row';
 import { notWithdrawn } from '../sharing/archived';
 import { findSurvey } from '../surveys';
 import { describeCandidate } from './describe';
@@ -72,12 +73,15 @@ const inOrder = (all: Loaded[], ranges: LeadRanges) =>
     .map(({ one }) => one);
 
 /** Candidates of all surveys, those that wait for a person first. */
-export async function listCandidates(actor: Actor, query: CandidateQuery): Promise<CandidateList> {
+export async function listCandidates(
+  actor: Actor,
+  query: CandidateQuery & Pick<PageAsked, 'after'>,
+): Promise<CandidateList> {
   demand(actor, 'read');
   const [all, ranges] = await Promise.all([readAll(actor, query), leadRanges(actor)]);
-  const { status, limit, offset } = query;
+  const { status } = query;
   const asked = all.filter(({ row }) => status === undefined || row.status === status);
-  const page = inOrder(asked, ranges).slice(offset, offset + limit);
+  const page = pageOf(inOrder(asked, ranges), query, ({ row }) => row.id);
   const counted = await countsOf(page.map(({ row }) => row.id));
   const counts = companionStatusSchema.options.map((name) => [
     name,

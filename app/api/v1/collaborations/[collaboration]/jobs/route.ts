@@ -3,6 +3,6 @@ import { pageSchema } from '@/lib/schemas/common';
 import { listJobs } from '@/lib/services/jobs';
 
 export const GET = collaborationRoute(
-  { scope: 'read', query: pageSchema, paged: 'jobs' },
+  { scope: 'read', query: pageSchema, paged: 'jobs', movingOrder: true },
   ({ actor, query }) => listJobs(actor, query),
 );
