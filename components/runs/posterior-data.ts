@@ -6,7 +6,7 @@ import type { LimitAnswer } from './live-answer';
 import type { LiveSetting } from './live-setting';
 
 interface PosteriorInputs {
-  setting: LiveSetting;
+  setting: Pick<LiveSetting, 'prior' | 'credibleLevel'>;
   quantity: RateQuantity;
   answer: LimitAnswer;
   zero?: LimitAnswer;

@@ -1,15 +1,41 @@
+import { FoldSection } from '@/components/ui/fold-section';
 import { FormulaWords } from '@/components/ui/formula-words';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import type { RunResult, RunView } from '@/lib/schemas/runs';
 import { durationOf, fingerprint, formatDay } from './time-words';
 
-/** Everything that a run's number was made from, a step each. */
-export function Provenance({ collaboration, run }: { collaboration: string; run: RunView }) {
-  return <ProvenanceChain steps={provenanceSteps(collaboration, run)} />;
+interface ProvenanceSectionProps {
+  collaboration: string;
+  run: RunView;
+  result: RunResult;
+  /** The page shows a change that the run does not know. */
+  isLive?: boolean;
 }
 
-export function provenanceSteps(collaboration: string, run: RunView): ProvenanceStep[] {
+/** Everything that a run's number was made from, a step each. */
+export function ProvenanceSection(props: ProvenanceSectionProps) {
+  const { collaboration, run, result, isLive = false } = props;
+  const steps = provenanceSteps(collaboration, run);
+  return (
+    <FoldSection
+      number={6}
+      title="Provenance"
+      help="fingerprint"
+      context={
+        isLive
+          ? `run ${run.number}; a live change is not recorded until you save`
+          : 'everything this number was made from, unchanged since the run'
+      }
+      answer={`${steps.length} steps, unchanged since run ${run.number}`}
+    >
+      <ProvenanceChain steps={steps} />
+      <ProvenanceDetails run={run} result={result} />
+    </FoldSection>
+  );
+}
+
+function provenanceSteps(collaboration: string, run: RunView): ProvenanceStep[] {
   const { inputs, result } = run;
   if (!inputs) return [];
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
@@ -76,7 +102,7 @@ function leftOutWords(count: number): string | undefined {
 }
 
 /** What stands in no step: how maps were combined and judged, and the whole digests. */
-export function ProvenanceDetails({ run, result }: { run: RunView; result: RunResult }) {
+function ProvenanceDetails({ run, result }: { run: RunView; result: RunResult }) {
   const { inputs } = run;
   const rows = [
     ['statement', result.statement.sentence],

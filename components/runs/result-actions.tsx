@@ -14,33 +14,44 @@ import { ExportMenu } from './export-menu';
 import type { LiveSetting } from './live-setting';
 import { copyAndRun, saveAndRun } from './save-setting';
 
-interface ResultActionsProps {
+interface KeptActionsProps {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run. */
   run?: RunSummary;
-  setting: LiveSetting;
-  isUnsaved: boolean;
   /** A run is on its way. */
   isBusy: boolean;
   /** At the foot of a narrow screen only what a thumb needs. */
   placement: 'head' | 'foot';
-  onUndo(): void;
   onSaved(): void;
+}
+
+interface ResultActionsProps extends KeptActionsProps {
+  setting: LiveSetting;
+  isUnsaved: boolean;
+  onUndo(): void;
+}
+
+const WAIT = 'A run is on its way: wait for it or stop it first.';
+const mayChange = ({ can }: AnalysisView) => can.change && can.run;
+const nextNumber = ({ runs }: AnalysisView) => (runs[0]?.number ?? 0) + 1;
+
+/** What becomes of a change, and what may be done with a result. */
+export function ResultActions({ setting, isUnsaved, onUndo, ...kept }: ResultActionsProps) {
+  return isUnsaved ? (
+    <ChangeActions {...kept} setting={setting} onUndo={onUndo} />
+  ) : (
+    <KeptActions {...kept} />
+  );
 }
 
 type Work = 'save' | 'copy' | 'run';
 
-/** What becomes of a change, and what may be done with a result. */
-export function ResultActions(props: ResultActionsProps) {
-  const { collaboration, analysis, run, setting, isUnsaved, isBusy, onUndo, onSaved } = props;
-  const isFoot = props.placement === 'foot';
+/** One piece of work at a time; a key that it answers is where the person goes on. */
+function useWork(collaboration: string, onSaved: () => void) {
   const router = useRouter();
   const [work, setWork] = useState<Work>();
   const [problem, setProblem] = useState<string>();
-  const mayChange = analysis.can.change && analysis.can.run;
-  const next = (analysis.runs[0]?.number ?? 0) + 1;
-
   const perform = async (kind: Work, task: () => Promise<string | undefined>) => {
     setWork(kind);
     setProblem(undefined);
@@ -54,12 +65,71 @@ export function ResultActions(props: ResultActionsProps) {
       setWork(undefined);
     }
   };
+  const dialog = (
+    <Dialog
+      isOpen={problem !== undefined}
+      onClose={() => setProblem(undefined)}
+      title="It was not done"
+      actions={
+        <Button variant="primary" onClick={() => setProblem(undefined)}>
+          Back to the result
+        </Button>
+      }
+    >
+      <p>{problem}</p>
+    </Dialog>
+  );
+  return { work, perform, dialog };
+}
+
+function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
+  const { collaboration, analysis, setting, isBusy, onUndo, onSaved } = props;
+  const isFoot = props.placement === 'foot';
+  const { work, perform, dialog } = useWork(collaboration, onSaved);
+  const isOwn = mayChange(analysis);
+  const next = nextNumber(analysis);
   const save = () =>
     perform('save', async () => {
       await saveAndRun(collaboration, analysis, setting);
       return undefined;
     });
   const saveCopy = () => perform('copy', () => copyAndRun(collaboration, analysis, setting));
+  return (
+    <>
+      <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>
+        {isFoot ? <span className="sr-only">Undo</span> : 'Undo'}
+      </Button>
+      {analysis.can.copy && !(isFoot && isOwn) && (
+        <Button
+          icon="copy"
+          variant={isOwn ? 'normal' : 'primary'}
+          onClick={saveCopy}
+          isBusy={work === 'copy'}
+        >
+          Save as copy
+        </Button>
+      )}
+      {isOwn && (
+        <Button
+          variant="primary"
+          className={isFoot ? '' : 'max-md:hidden'}
+          onClick={save}
+          isBusy={work === 'save'}
+          disabledReason={isBusy ? WAIT : undefined}
+        >
+          {isFoot ? `Run ${next}` : `Save as run ${next}`}
+        </Button>
+      )}
+      {dialog}
+    </>
+  );
+}
+
+/** What may be done with a result that no control has left. */
+export function KeptActions(props: KeptActionsProps) {
+  const { collaboration, analysis, run, isBusy, onSaved } = props;
+  const isFoot = props.placement === 'foot';
+  const { work, perform, dialog } = useWork(collaboration, onSaved);
   const copy = () =>
     perform('copy', async () => (await copyAnalysis(collaboration, analysis.key)).key);
   const runAgain = () =>
@@ -67,90 +137,49 @@ export function ResultActions(props: ResultActionsProps) {
       await startRun(collaboration, analysis.key);
       return undefined;
     });
-  const wait = isBusy ? 'A run is on its way: wait for it or stop it first.' : undefined;
-
   return (
     <>
-      {isUnsaved ? (
-        <>
-          <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>
-            {isFoot ? <span className="sr-only">Undo</span> : 'Undo'}
-          </Button>
-          {analysis.can.copy && !(isFoot && mayChange) && (
-            <Button
-              icon="copy"
-              variant={mayChange ? 'normal' : 'primary'}
-              onClick={saveCopy}
-              isBusy={work === 'copy'}
-            >
-              Save as copy
-            </Button>
-          )}
-          {mayChange && (
-            <Button
-              variant="primary"
-              className={isFoot ? '' : 'max-md:hidden'}
-              onClick={save}
-              isBusy={work === 'save'}
-              disabledReason={wait}
-            >
-              {isFoot ? `Run ${next}` : `Save as run ${next}`}
-            </Button>
-          )}
-        </>
-      ) : (
-        <>
-          {analysis.can.copy && !isFoot && (
-            <Button icon="copy" onClick={copy} isBusy={work === 'copy'}>
-              Copy
-            </Button>
-          )}
-          {run && (
-            <span className={isFoot ? '' : 'max-md:hidden'}>
-              <LinkButton href={compareAddress(collaboration, analysis)} icon="compare">
-                {analysis.parent && !isFoot ? `Compare with ${analysis.parent}` : 'Compare'}
-              </LinkButton>
-            </span>
-          )}
-          {run && !isFoot && <ExportMenu collaboration={collaboration} run={run} />}
-          {run && !isFoot && (
-            <LinkButton
-              href={`/${collaboration}/releases/freeze/${run.id}`}
-              icon={run.frozen === 'released' ? 'diamond' : 'lock'}
-            >
-              {run.frozen === null ? 'Freeze' : run.frozen === 'frozen' ? 'Frozen' : 'Released'}
-            </LinkButton>
-          )}
-          {run && (!isFoot || needsRun(analysis, run)) && (
-            <Button
-              variant={needsRun(analysis, run) ? 'primary' : 'normal'}
-              onClick={runAgain}
-              isBusy={work === 'run'}
-              disabledReason={
-                mayChange
-                  ? wait
-                  : 'Only whoever made this analysis, a statistician, an author or an owner can run it. Copy it and run the copy.'
-              }
-            >
-              {needsRun(analysis, run) ? `Run ${next}` : 'Run again'}
-            </Button>
-          )}
-        </>
+      {analysis.can.copy && !isFoot && (
+        <Button icon="copy" onClick={copy} isBusy={work === 'copy'}>
+          Copy
+        </Button>
       )}
-      <Dialog
-        isOpen={problem !== undefined}
-        onClose={() => setProblem(undefined)}
-        title="It was not done"
-        actions={
-          <Button variant="primary" onClick={() => setProblem(undefined)}>
-            Back to the result
-          </Button>
-        }
-      >
-        <p>{problem}</p>
-      </Dialog>
+      {run && (
+        <span className={isFoot ? '' : 'max-md:hidden'}>
+          <LinkButton href={compareAddress(collaboration, analysis)} icon="compare">
+            {analysis.parent && !isFoot ? `Compare with ${analysis.parent}` : 'Compare'}
+          </LinkButton>
+        </span>
+      )}
+      {run && !isFoot && <ExportMenu collaboration={collaboration} run={run} />}
+      {run && !isFoot && (
+        <LinkButton
+          href={`/${collaboration}/releases/freeze/${run.id}`}
+          icon={run.frozen === 'released' ? 'diamond' : 'lock'}
+        >
+          {run.frozen === null ? 'Freeze' : run.frozen === 'frozen' ? 'Frozen' : 'Released'}
+        </LinkButton>
+      )}
+      {run && (!isFoot || needsRun(analysis, run)) && (
+        <Button
+          variant={needsRun(analysis, run) ? 'primary' : 'normal'}
+          onClick={runAgain}
+          isBusy={work === 'run'}
+          disabledReason={whyNot(analysis, isBusy)}
+        >
+          {needsRun(analysis, run) ? `Run ${nextNumber(analysis)}` : 'Run again'}
+        </Button>
+      )}
+      {dialog}
     </>
   );
+}
+
+function whyNot(analysis: AnalysisView, isBusy: boolean): string | undefined {
+  if (!mayChange(analysis)) {
+    return 'Only whoever made this analysis, a statistician, an author or an owner can run it. Copy it and run the copy.';
+  }
+  return isBusy ? WAIT : undefined;
 }
 
 function needsRun(analysis: AnalysisView, run: RunSummary): boolean {

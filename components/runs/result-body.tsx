@@ -9,7 +9,6 @@ import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { documentOfShown } from '@/components/statement/document-of-shown';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
-import { FoldSection } from '@/components/ui/fold-section';
 import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
 import { Plate } from '@/components/ui/plate';
@@ -22,7 +21,7 @@ import { ChecksStrip } from './checks-strip';
 import { sampleOf } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
-import { Provenance, ProvenanceDetails, provenanceSteps } from './provenance';
+import { ProvenanceSection } from './provenance';
 import { conditionRows, ResultStatement } from './result-statement';
 import { runFigures } from './run-figures';
 import { type ShownResult, showResult } from './shown-result';
@@ -151,20 +150,7 @@ export function ResultBody(props: ResultBodyProps) {
         onDefinition={onDefinition}
       />
       <div className="pb-10 md:mt-8">
-        <FoldSection
-          number={6}
-          title="Provenance"
-          help="fingerprint"
-          context={
-            isUnsaved || shown.isLive
-              ? `run ${run.number}; a live change is not recorded until you save`
-              : 'everything this number was made from, unchanged since the run'
-          }
-          answer={`${provenanceSteps(collaboration, run).length} steps, unchanged since run ${run.number}`}
-        >
-          <Provenance collaboration={collaboration} run={run} />
-          <ProvenanceDetails run={run} result={result} />
-        </FoldSection>
+        <ProvenanceSection {...{ collaboration, run, result }} isLive={isUnsaved || shown.isLive} />
         <div className="md:mt-8">
           <FurtherQuestions
             number={7}

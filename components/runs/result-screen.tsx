@@ -6,25 +6,22 @@ import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
-import { WithdrawnNotices } from '@/components/sharing/withdrawn-notice';
-import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
-import { StateMark } from '@/components/ui/state-mark';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import type { RunView } from '@/lib/schemas/runs';
+import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
+import { RunNotices } from './run-notices';
 import { recipeOfRun } from './run-recipe';
 import { isFinished, isOnItsWay } from './run-standing';
 
 /** Each analysis shows one of these, and a run on its way only some. */
 const NoRunPlate = dynamic(async () => (await import('./no-run-plate')).NoRunPlate);
 const StoredResult = dynamic(async () => (await import('./stored-result')).StoredResult);
-const RunEnded = dynamic(async () => (await import('./run-progress')).RunEnded);
-const RunProgress = dynamic(async () => (await import('./run-progress')).RunProgress);
 
 interface ResultScreenProps {
   collaboration: string;
@@ -60,6 +57,7 @@ export function ResultScreen(props: ResultScreenProps) {
       collaboration={collaboration}
       analysis={analysis}
       run={run}
+      definition={runPopulation?.definition ?? definition}
       onChanged={onChanged}
     />
   );
@@ -92,7 +90,6 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
   const refresh = () => {
     void mutate();
   };
-  const ended = newest?.job.status === 'failed' || newest?.job.status === 'cancelled';
   const actions = (placement: 'head' | 'foot') => (
     <ResultActions
       placement={placement}
@@ -121,39 +118,13 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
         state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
         actions={actions('head')}
       />
-      <div className="grid gap-3 empty:hidden [&:not(:empty)]:mb-4">
-        {isOnItsWay(newest) && (
-          <RunProgress
-            collaboration={collaboration}
-            run={newest}
-            canStop={analysis.can.run}
-            onChanged={refresh}
-          />
-        )}
-        {ended && (
-          <RunEnded
-            collaboration={collaboration}
-            run={newest}
-            canStop={analysis.can.run}
-            onChanged={refresh}
-          />
-        )}
-        <WithdrawnNotices surveys={finished?.withdrawn} />
-        {finished?.hasOlderInputs && (
-          <Notice tone="warn" title="Made with older inputs.">
-            Newer maps, companions or targets exist than run {finished.number} used. It stays as it
-            is; a new run would use them.
-          </Notice>
-        )}
-        {analysis.state === 'changed' && finished && !needsOnlyLive(analysis, run) && (
-          <Notice
-            tone="warn"
-            title={`Surveys or their combination changed since run ${finished.number}.`}
-          >
-            The number below is of run {finished.number} until a new run is made.
-          </Notice>
-        )}
-      </div>
+      <RunNotices
+        collaboration={collaboration}
+        analysis={analysis}
+        run={finished}
+        needsRun={!needsOnlyLive(analysis, run)}
+        onChanged={refresh}
+      />
       {run?.result && run.inputs && definition ? (
         <ResultBody
           key={run.id}
@@ -177,38 +148,6 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
       )}
     </>
   );
-}
-
-function AnalysisState({
-  analysis,
-  isUnsaved,
-  run,
-}: {
-  analysis: AnalysisView;
-  isUnsaved: boolean;
-  run: RunSummary | undefined;
-}) {
-  if (isUnsaved) return <StateMark kind="unsaved">Unsaved change</StateMark>;
-  switch (analysis.state) {
-    case 'running':
-      return <StateMark kind="running">Running</StateMark>;
-    case 'failed':
-      return <StateMark kind="bad">Draft, run {analysis.runs[0]?.number} failed</StateMark>;
-    case 'changed':
-      return <StateMark kind="unsaved">Draft, changed since run {run?.number}</StateMark>;
-    case 'run':
-      if (run?.frozen) {
-        const words = run.frozen === 'released' ? 'Released' : 'Frozen';
-        return (
-          <StateMark kind={run.frozen}>
-            {words}, run {run.number}
-          </StateMark>
-        );
-      }
-      return <StateMark kind="draft">Draft, run {run?.number}, all changes saved</StateMark>;
-    case 'draft':
-      return <StateMark kind="draft">Draft, no run yet</StateMark>;
-  }
 }
 
 /** The population of the shown run: not always the one that the recipe names by now. */

@@ -48,9 +48,9 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
           stars={result.stars}
           exposure={shown.exposure}
           depth={depth}
-          definition={definition}
+          range={definition}
           companions={inputs.companions}
-          onDefinition={props.onDefinition}
+          onRange={(range) => props.onDefinition({ ...definition, ...range })}
         />
         <div className="grid min-w-0 content-start md:gap-y-8">
           <FoldSection

@@ -69,7 +69,8 @@ export function ResultStatement(props: ResultStatementProps) {
   );
 }
 
-function lead(isConstrained: boolean, isFraction: boolean): string {
+/** How the sentence under the number begins. */
+export function lead(isConstrained: boolean, isFraction: boolean): string {
   if (!isConstrained) return 'These data do not constrain planets of';
   return isFraction ? 'of stars host at least one planet of' : 'planets of';
 }

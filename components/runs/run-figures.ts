@@ -11,26 +11,42 @@ export function runFigures(
   result: RunResult,
   shown: ShownResult,
 ): Omit<FigureSettings, 'toPdf'> {
-  const name = `${run.analysis.key}, run ${run.number}`;
-  const surveys = inputs.surveys.map((survey) => survey.name).join(', ');
-  const sample = `${surveys}: ${result.stars} stars.`;
-  const file = `${run.analysis.key}-run-${run.number}`;
-  if (!shown.isLive || shown.isOfRun) {
-    return {
-      ...{ file, title: name, label: `draft, run ${run.number}` },
-      caption: [
-        `${name}, draft. ${result.statement.sentence}. ${sample}`,
-        result.statement.conditions.map((condition) => `${condition}.`).join(' '),
-        `SHA-256 ${run.resultDigest ?? ''}`,
-      ],
-    };
-  }
+  if (!shown.isLive || shown.isOfRun) return recordedFigures(run, inputs, result);
+  const name = nameOf(run);
   return {
-    file: `${file}-changed`,
+    file: `${fileOf(run)}-changed`,
     title: `${name}, changed and not recorded`,
     label: `not recorded, changed from run ${run.number}`,
-    caption: [liveSentence(shown), `${sample} Changed from ${name}; no run has recorded it.`],
+    caption: [
+      liveSentence(shown),
+      `${sampleWords(inputs, result)} Changed from ${name}; no run has recorded it.`,
+    ],
   };
+}
+
+/** What the figures of a run say of the result that it recorded. */
+export function recordedFigures(
+  run: RunView,
+  inputs: RunInputs,
+  result: RunResult,
+): Omit<FigureSettings, 'toPdf'> {
+  const name = nameOf(run);
+  const standing = run.frozen ?? 'draft';
+  return {
+    ...{ file: fileOf(run), title: name, label: `${standing}, run ${run.number}` },
+    caption: [
+      `${name}, ${standing}. ${result.statement.sentence}. ${sampleWords(inputs, result)}`,
+      result.statement.conditions.map((condition) => `${condition}.`).join(' '),
+      `SHA-256 ${run.resultDigest ?? ''}`,
+    ],
+  };
+}
+
+const nameOf = (run: RunView) => `${run.analysis.key}, run ${run.number}`;
+const fileOf = (run: RunView) => `${run.analysis.key}-run-${run.number}`;
+
+function sampleWords({ surveys }: RunInputs, { stars }: RunResult): string {
+  return `${surveys.map(({ name }) => name).join(', ')}: ${stars} stars.`;
 }
 
 /** The limit of a live setting with its conditions. */

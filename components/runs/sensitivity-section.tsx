@@ -5,9 +5,9 @@ import { DepthChart, type DepthSeries } from '@/components/charts/depth-chart';
 import type { MapDetection } from '@/components/charts/detection-marks';
 import type { MapData } from '@/components/charts/map-contours';
 import { RampKey } from '@/components/charts/ramp-key';
+import type { MapRange } from '@/components/charts/range-box';
 import { FoldSection } from '@/components/ui/fold-section';
 import { formatSignificant } from '@/lib/quantities/display';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DetectionView } from '@/lib/schemas/runs';
 
 interface SensitivitySectionProps {
@@ -15,14 +15,16 @@ interface SensitivitySectionProps {
   stars: number;
   exposure: number;
   depth: DepthSeries[];
-  definition: PowerLawDefinition;
+  /** None where the masses in question differ from star to star. */
+  range?: MapRange;
   companions: DetectionView[];
-  onDefinition(definition: PowerLawDefinition): void;
+  /** Given, the range is dragged in the map. */
+  onRange?(range: MapRange): void;
 }
 
-/** Depth of search by survey over the mean map, on one axis; the range is dragged in the map. */
+/** Depth of search by survey over the mean map, on one axis. */
 export function SensitivitySection(props: SensitivitySectionProps) {
-  const { map, stars, exposure, depth, definition, companions, onDefinition } = props;
+  const { map, stars, exposure, depth, range, companions, onRange } = props;
   return (
     <FoldSection
       number={2}
@@ -32,12 +34,12 @@ export function SensitivitySection(props: SensitivitySectionProps) {
       tools={<RampKey label={`mean detection probability, ${stars} stars`} />}
     >
       <div className="grid gap-1">
-        <DepthChart semiMajorAxisAu={map.semiMajorAxisAu} series={depth} range={definition} />
+        <DepthChart semiMajorAxisAu={map.semiMajorAxisAu} series={depth} range={range} />
         <CompletenessMapChart
           map={map}
           subject={`mean detection probability, ${stars} stars`}
-          range={definition}
-          onRangeChange={(range) => onDefinition({ ...definition, ...range })}
+          range={range}
+          onRangeChange={onRange}
           detections={companions.map(asMark)}
         />
       </div>

@@ -106,7 +106,8 @@ function setAside(
   return { treatment: 'set-aside', entries };
 }
 
-function storedCandidates(inputs: RunInputs, { candidates }: RunResult) {
+/** Candidates without an answer, and what the run itself did with them. */
+export function storedCandidates(inputs: RunInputs, { candidates }: RunResult) {
   return candidates ?? setAside(inputs, ({ insideRanges }) => insideRanges !== false);
 }
 

@@ -17,7 +17,8 @@ interface StarsSectionProps {
   /** Undefined until the maps are there: then the run's own numbers are shown. */
   sample?: LiveSample;
   view?: PopulationView;
-  setting: LiveSetting;
+  /** None where no control knows the population: then no limit is shown without some stars. */
+  setting?: LiveSetting;
   limit: number;
   quantity: RateQuantity;
   counted: { name: string; starId: string }[];
@@ -70,10 +71,12 @@ export function StarsSection(props: StarsSectionProps) {
       }
     >
       <StarDots stars={stars} selected={chosen} onSelect={(names) => setChosen(new Set(names))} />
-      <LeaveOut
-        {...{ inputs, stars, sample, view, setting, limit, quantity, chosen }}
-        onChosen={setChosen}
-      />
+      {setting && (
+        <LeaveOut
+          {...{ inputs, stars, sample, view, setting, limit, quantity, chosen }}
+          onChosen={setChosen}
+        />
+      )}
     </FoldSection>
   );
 }

@@ -1,48 +1,40 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
-import { startRun } from '@/components/hooks/use-runs';
-import { WithdrawnNotices } from '@/components/sharing/withdrawn-notice';
-import { RecordedStatementCopy } from '@/components/statement/statement-copy';
+import { FigureFrame } from '@/components/figures/figure-frame';
 import { CalibrationCheck } from '@/components/studies/calibration/calibration-check';
-import { Button } from '@/components/ui/button';
+import { FurtherQuestions } from '@/components/studies/further-questions';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
-import { Conditions, conditionRow, Plate } from '@/components/ui/plate';
 import type { AnalysisView } from '@/lib/schemas/analyses';
-import type { RunView } from '@/lib/schemas/runs';
+import type { ListedDefinition } from '@/lib/schemas/populations';
+import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import { AnalysisState } from './analysis-state';
+import { ChecksStrip } from './checks-strip';
 import { NoRunPlate } from './no-run-plate';
-import { RunEnded, RunProgress } from './run-progress';
+import { ProvenanceSection } from './provenance';
+import { KeptActions } from './result-actions';
+import { recordedFigures } from './run-figures';
+import { RunNotices } from './run-notices';
+import { isFinished, isOnItsWay } from './run-standing';
+import { storedCandidates } from './shown-result';
+import { StoredPlate } from './stored-plate';
+import { StoredSections } from './stored-sections';
 
 interface StoredResultProps {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run, with its result. */
   run: RunView | null;
+  /** The population of that run. */
+  definition: ListedDefinition;
   onChanged(): void;
 }
 
-/** A result as it is stored: its sentence and conditions, where no control can follow the law. */
-export function StoredResult({ collaboration, analysis, run, onChanged }: StoredResultProps) {
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const newest = analysis.runs[0];
-  const isOnItsWay = newest?.job.status === 'waiting' || newest?.job.status === 'running';
-  const hasEnded = newest?.job.status === 'failed' || newest?.job.status === 'cancelled';
-  const again = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      await startRun(collaboration, analysis.key);
-      onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
-  const shared = { collaboration, canStop: analysis.can.run, onChanged };
+/** A result as it is stored, where no control of the page can follow the law of its population. */
+export function StoredResult(props: StoredResultProps) {
+  const { collaboration, analysis, run, definition, onChanged } = props;
+  const finished = analysis.runs.find(isFinished);
+  const isBusy = isOnItsWay(analysis.runs[0]);
   return (
     <>
       <PageTitle
@@ -51,53 +43,78 @@ export function StoredResult({ collaboration, analysis, run, onChanged }: Stored
           { href: `/${collaboration}/analyses`, label: 'Analyses' },
           { label: analysis.key },
         ]}
+        state={<AnalysisState analysis={analysis} run={finished} />}
         actions={
-          run?.result && analysis.can.run && !isOnItsWay ? (
-            <Button onClick={again} isBusy={isBusy}>
-              Run again
-            </Button>
-          ) : undefined
+          <KeptActions
+            placement="head"
+            run={finished}
+            onSaved={onChanged}
+            {...{ collaboration, analysis, isBusy }}
+          />
         }
       />
-      <div className="mb-4 grid gap-3">
-        <Notice tone="warn" title="Shown as it is stored.">
-          The controls of this page know plain power laws only; this population is another one, so a
-          change of it is a new version and a new run.
-        </Notice>
-        <WithdrawnNotices surveys={run?.withdrawn} />
-        {isOnItsWay && newest && <RunProgress run={newest} {...shared} />}
-        {hasEnded && newest && <RunEnded run={newest} {...shared} />}
-        {problem !== undefined && (
-          <Notice tone="bad" title="The run was not started." isAnnounced>
-            {problem}
-          </Notice>
-        )}
-      </div>
-      {run?.result ? (
-        <>
-          <Plate>
-            <p className="statement mb-5">{run.result.statement.sentence}</p>
-            <Conditions rows={run.result.statement.conditions.map(conditionRow)} />
-            <div className="mt-2 -ml-1">
-              <RecordedStatementCopy collaboration={collaboration} runId={run.id} />
-            </div>
-          </Plate>
-          <div className="px-0.5 pt-3.5">
-            <CalibrationCheck
-              collaboration={collaboration}
-              analysisKey={analysis.key}
-              runId={run.id}
-            />
-          </div>
-        </>
+      <RunNotices needsRun run={finished} {...{ collaboration, analysis, onChanged }} />
+      {run?.result && run.inputs ? (
+        <StoredBody
+          {...{ collaboration, run, definition }}
+          inputs={run.inputs}
+          result={run.result}
+        />
       ) : (
         <NoRunPlate
           collaboration={collaboration}
           analysis={analysis}
-          isOnItsWay={isOnItsWay}
+          isOnItsWay={isBusy}
           onStarted={onChanged}
         />
       )}
     </>
+  );
+}
+
+interface StoredBodyProps {
+  collaboration: string;
+  run: RunView;
+  definition: ListedDefinition;
+  inputs: RunInputs;
+  result: RunResult;
+}
+
+function StoredBody({ collaboration, run, definition, inputs, result }: StoredBodyProps) {
+  return (
+    <FigureFrame collaboration={collaboration} {...recordedFigures(run, inputs, result)}>
+      <StoredPlate {...{ collaboration, run, definition, inputs, result }} />
+      <div className="mt-2.5">
+        <Notice tone="neutral" title="Recorded, without live controls.">
+          The controls of an analysis know single power laws. This population has another law: a
+          change of it is a new version of the population and a new run.
+        </Notice>
+      </div>
+      <ChecksStrip
+        inputs={inputs}
+        shareOutsideMaps={result.shareOutsideMaps}
+        shareFlaggedCooling={result.shareFlaggedCooling}
+        candidates={storedCandidates(inputs, result)}
+        calibration={
+          <CalibrationCheck
+            collaboration={collaboration}
+            analysisKey={run.analysis.key}
+            runId={run.id}
+          />
+        }
+      />
+      <StoredSections {...{ collaboration, run, definition, inputs, result }} />
+      <div className="pb-10 md:mt-8">
+        <ProvenanceSection {...{ collaboration, run, result }} />
+        <div className="md:mt-8">
+          <FurtherQuestions
+            number={7}
+            collaboration={collaboration}
+            analysisKey={run.analysis.key}
+            runId={run.id}
+          />
+        </div>
+      </div>
+    </FigureFrame>
   );
 }

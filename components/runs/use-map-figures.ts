@@ -10,13 +10,8 @@ import { orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
 import { depthOf, profileAlong, sumBySurvey } from './survey-sums';
 
-/** The mean map of a run, and what follows from it for a population: depth and profiles. */
-export function useMapFigures(
-  result: RunResult,
-  inputs: RunInputs,
-  sample: LiveSample | undefined,
-  definition: PowerLawDefinition,
-) {
+/** The mean map and the depth by survey, as a run stored them. */
+export function useStoredMap(result: RunResult, inputs: RunInputs) {
   const map: MapData = useMemo(
     () => ({
       massMjup: Float64Array.from(result.meanMap.massMjup),
@@ -25,14 +20,27 @@ export function useMapFigures(
     }),
     [result],
   );
+  const depth = useMemo(() => savedDepth(result, inputs), [result, inputs]);
+  return { map, depth };
+}
+
+/** The mean map of a run, and what follows from it for a population: depth and profiles. */
+export function useMapFigures(
+  result: RunResult,
+  inputs: RunInputs,
+  sample: LiveSample | undefined,
+  definition: PowerLawDefinition,
+) {
+  const stored = useStoredMap(result, inputs);
+  const { map } = stored;
   const sums = useMemo(() => sample && sumBySurvey(sample, inputs.surveys), [sample, inputs]);
   const weights = useMemo(
     () => orNull(() => populationWeights(map, definition)),
     [map, definition],
   );
   const depth = useMemo(
-    () => (sums && weights ? depthOf(sums, weights) : savedDepth(result, inputs)),
-    [sums, weights, result, inputs],
+    () => (sums && weights ? depthOf(sums, weights) : stored.depth),
+    [sums, weights, stored.depth],
   );
   const profiles = useMemo(
     () =>

@@ -3,7 +3,7 @@ import { currentActor } from '@/app/session';
 import { ReleaseScreen } from '@/components/releases/release-screen';
 import { getDeposit } from '@/lib/services/deposits/deposits';
 import { listGuestLinks } from '@/lib/services/releases/guest-links';
-import { addressOfRelease } from '@/lib/services/releases/sign';
+import { addressOfRelease } from '@/lib/services/releases/address';
 import { foundRelease } from '../found-release';
 
 interface PageProps {
