@@ -57,7 +57,7 @@ export function PlaceForm({ settings, save, zones }: SettingsPartProps & { zones
       )}
       <SelectField
         label="Time zone"
-        hint="Of the dates on pages; files and the API keep UTC"
+        hint="Of the times in log and activity; other days, files and the API keep UTC"
         value={timeZone}
         disabled={isLocked}
         onChange={({ target }) => setTimeZone(target.value)}
