@@ -102,3 +102,8 @@ export function config(): Config {
   };
   return parsed;
 }
+
+/** Forgets the environment, for a process that changes its own: the next use reads it anew. */
+export function forgetConfig(): void {
+  parsed = undefined;
+}

@@ -4,12 +4,11 @@ import path from 'node:path';
 import { afterAll, beforeAll, expect, it } from 'vitest';
 import { newestBinaries } from '@/lib/local/cluster-files.mjs';
 import { backUp, manifestOf, restore } from '@/lib/local/database-copy.mjs';
-import { closeDatabase } from '@/models';
 import { withDatabase } from '../support/database';
 import { createCollaborationWith } from '../support/people';
 import { buildSurvey, buildTarget } from '../support/sample';
 
-const { url, name, query } = withDatabase();
+const { url, name, query, leave } = withDatabase();
 const folder = mkdtempSync(path.join(os.tmpdir(), 'backup-'));
 const file = path.join(folder, 'laboratory.dump');
 const tools = { databaseUrl: url, binaries: newestBinaries() ?? '' };
@@ -42,7 +41,7 @@ it('a restored laboratory has the rows and digests of its backup, whatever happe
   expect(made.tables['public.target'].rows).toBe(5);
   await query(`delete from target where name = 'Star 2'`);
   await query(`update target set name = 'Another' where name = 'Star 3'`);
-  await closeDatabase();
+  await leave();
 
   const { replaced } = await restore({ ...tools, file });
   expect(replaced).toBe(`${name}_replaced`);

@@ -16,14 +16,14 @@ import { TargetRow } from '@/models';
 import { withDatabase } from '../support/database';
 import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { bearer, call, createCollaborationWith, tokenOf } from '../support/people';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 let lab: FinishedLab;
 let headers: Record<string, string>;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('route-exports'), { threads: 1 });
+  await startWorker({ threads: 1 });
   lab = await buildFinishedLab();
   headers = bearer(await tokenOf(lab.people.student, lab.collaboration));
 });

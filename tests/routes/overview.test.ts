@@ -8,13 +8,13 @@ import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { bearer, call, createCollaborationWith, tokenOf } from '../support/people';
 import { buildCompanion, buildTarget } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 let lab: FinishedLab;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('route-overview'), { threads: 1 });
+  await startWorker({ threads: 1 });
   lab = await buildFinishedLab();
 });
 afterAll(killWorkers);

@@ -14,7 +14,7 @@ import { bearer, call, createCollaborationWith, tokenOf } from '../support/peopl
 import { POPULATION } from '../support/population';
 import { buildAnalysis, buildPopulation, buildTarget, recipeOf } from '../support/sample';
 import { untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 let lab: FinishedLab;
@@ -22,7 +22,7 @@ let headers: Record<string, string>;
 let foreign: { headers: Record<string, string>; slug: string };
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('route-runs'), { threads: 1 });
+  await startWorker({ threads: 1 });
   lab = await buildFinishedLab();
   headers = bearer(await tokenOf(lab.people.owner, lab.collaboration));
   const other = await createCollaborationWith(['owner']);

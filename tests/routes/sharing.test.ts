@@ -42,7 +42,7 @@ import {
 } from '../support/sample';
 import { ask, buildSide, offerTo, post, type Side, sharesOf, terms } from '../support/sharing';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker, until } from '../support/worker';
+import { killWorkers, startWorker, until } from '../support/worker';
 
 const { query } = withDatabase();
 let giver: Side;
@@ -65,7 +65,7 @@ const noOpenMaps = () =>
   });
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('route-sharing'), { threads: 1 });
+  await startWorker({ threads: 1 });
   giver = await buildSide('Team Giver');
   taker = await buildSide('Team Taker');
   stranger = await buildSide('Team Stranger');

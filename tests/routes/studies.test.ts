@@ -19,18 +19,16 @@ import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { bearer, call, createCollaborationWith, tokenOf } from '../support/people';
 import { buildAnalysis, recipeOf } from '../support/sample';
 import { runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker, type WorkerProcess } from '../support/worker';
+import { killWorkers, startWorker, type WorkerProcess } from '../support/worker';
 
 const { query } = withDatabase();
 let lab: FinishedLab;
 let worker: WorkerProcess;
-let main: string;
 let headers: Record<string, string>;
 let foreign: { headers: Record<string, string>; slug: string };
 
 beforeAll(async () => {
-  main = await bundleWorker('route-studies');
-  worker = await startWorker(main, { threads: 1 });
+  worker = await startWorker({ threads: 1 });
   lab = await buildFinishedLab();
   headers = bearer(await tokenOf(lab.people.owner, lab.collaboration));
   const other = await createCollaborationWith(['owner']);
@@ -184,7 +182,7 @@ describe('POST runs/{id}/studies', () => {
     });
     const response = await ask({ kind: 'influence' }, { run: run.id });
     expect(response.status).toBe(409);
-    worker = await startWorker(main, { threads: 1 });
+    worker = await startWorker({ threads: 1 });
   });
 });
 
@@ -249,7 +247,7 @@ describe('a study on its way', () => {
     );
     expect(other.id).not.toBe(asked.id);
     expect((await post(retryJob)).status).toBe(200);
-    worker = await startWorker(main, { threads: 1 });
+    worker = await startWorker({ threads: 1 });
     expect((await untilEnded(asked.job.id)).status).toBe('done');
     expect((await untilEnded(other.job.id)).status).toBe('done');
     const rows = await StudyRow.findAll({ where: { id: [asked.id, other.id] } });

@@ -23,7 +23,7 @@ import { withDatabase } from '../support/database';
 import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { bearer, call, tokenOf, webAddress } from '../support/people';
 import { runToEnd } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 let lab: FinishedLab;
@@ -31,7 +31,7 @@ let headers: Record<string, string>;
 let surveys = 0;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('route-withdrawal'), { threads: 1 });
+  await startWorker({ threads: 1 });
   lab = await buildFinishedLab();
   headers = bearer(await tokenOf(lab.people.owner, lab.collaboration));
 });

@@ -1,5 +1,5 @@
 import { randomBytes } from 'node:crypto';
-import { Client, type QueryResultRow } from 'pg';
+import { Client, Pool, type QueryResultRow } from 'pg';
 import { closeDatabase } from '@/models';
 
 const TEMPLATE = 'rarebound_template';
@@ -27,6 +27,22 @@ async function withClient<T>(url: string, work: (client: Client) => Promise<T>):
   }
 }
 
+/** Connections of this file's own statements: a new one for each takes longer than most of them. */
+let statements: Pool | undefined;
+
+function statementsOn(url: string): Pool {
+  statements ??= new Pool({ connectionString: url, application_name: 'test-support' })
+    // A test may end every connection to its database.
+    .on('error', () => undefined);
+  return statements;
+}
+
+/** Ends the connections of `query`; the next statement opens a new one. */
+async function endStatements(): Promise<void> {
+  await statements?.end();
+  statements = undefined;
+}
+
 /** A migrated, empty database of its own, copied from the template. */
 export async function createTestDatabase(): Promise<TestDatabase> {
   const name = `test_${process.pid}_${randomBytes(4).toString('hex')}`;
@@ -36,7 +52,7 @@ export async function createTestDatabase(): Promise<TestDatabase> {
     const end = Date.now() + 30_000;
     for (;;) {
       try {
-        await client.query(`create database ${name} template ${TEMPLATE}`);
+        await client.query(`create database ${name} template ${TEMPLATE} strategy file_copy`);
         return;
       } catch (error) {
         // The template can be copied by one test file at a time.
@@ -77,6 +93,7 @@ export async function findOpenConnections(
 /** Drops the database; throws when a pool, a listener or a worker still holds a connection to it. */
 export async function dropTestDatabase(database: TestDatabase): Promise<void> {
   await closeDatabase();
+  await endStatements();
   const open = await findOpenConnections(database);
   await withClient(maintenanceUrl(), async (client) => {
     const end = Date.now() + 20_000;
@@ -108,8 +125,15 @@ export function withDatabase() {
   return {
     name,
     url,
-    /** Rows of one statement, on a connection of its own, past every model. */
-    query: <Row extends QueryResultRow>(sql: string, values: unknown[] = []): Promise<Row[]> =>
-      withClient(url, async (client) => (await client.query<Row>(sql, values)).rows),
+    /** Rows of one statement, past every model and their connections. */
+    query: async <Row extends QueryResultRow>(
+      sql: string,
+      values: unknown[] = [],
+    ): Promise<Row[]> => (await statementsOn(url).query<Row>(sql, values)).rows,
+    /** Ends every connection of this file to it, where a test wants the database to itself. */
+    async leave(): Promise<void> {
+      await closeDatabase();
+      await endStatements();
+    },
   };
 }

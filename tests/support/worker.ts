@@ -1,24 +1,6 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import { once } from 'node:events';
-import path from 'node:path';
-import { bundleScripts } from '@/lib/local/bundle.mjs';
-
-const ENTRIES = [
-  'workers/main.ts',
-  'workers/compute/complete-maps.ts',
-  'workers/compute/answer-run.ts',
-  'workers/compute/answer-study.ts',
-];
-
-/**
- * Bundles the worker into a folder of the test file's own, so that files which run side by side do
- * not overwrite what the other's threads load.
- */
-export async function bundleWorker(testName: string): Promise<string> {
-  const folder = `dist/test-workers/${testName}`;
-  await bundleScripts(folder, ENTRIES);
-  return path.resolve(folder, 'workers/main.js');
-}
+import { bundledFile } from './bundle';
 
 export interface LogLine {
   level: string;
@@ -41,8 +23,8 @@ export interface WorkerProcess {
 const running = new Set<WorkerProcess>();
 
 /** A real worker process on the database of this test file. */
-export async function startWorker(main: string, { threads = 1 } = {}): Promise<WorkerProcess> {
-  const child = spawn(process.execPath, ['--enable-source-maps', main], {
+export async function startWorker({ threads = 1 } = {}): Promise<WorkerProcess> {
+  const child = spawn(process.execPath, ['--enable-source-maps', bundledFile('workers/main.ts')], {
     env: {
       ...process.env,
       NODE_ENV: 'test',

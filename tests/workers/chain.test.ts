@@ -20,7 +20,7 @@ import {
   recipeOf,
 } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
@@ -94,8 +94,7 @@ beforeAll(async () => {
   const made = await createCollaborationWith(['owner']);
   collaboration = made.collaboration;
   actor = await actorOf(made.people.owner, collaboration);
-  const main = await bundleWorker('chain');
-  await startWorker(main, { threads: 2 });
+  await startWorker({ threads: 2 });
 });
 afterAll(killWorkers);
 

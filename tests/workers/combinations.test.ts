@@ -20,7 +20,7 @@ import {
   recipeOf,
 } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 
@@ -36,7 +36,7 @@ beforeAll(async () => {
   const of = async (role: Role) => bearer(await tokenOf(team.people[role], team.collaboration));
   headers = { owner: await of('owner'), student: await of('student') };
   actor = await actorOf(team.people.owner, team.collaboration);
-  await startWorker(await bundleWorker('combinations'), { threads: 2 });
+  await startWorker({ threads: 2 });
   const lists = { North: [1, 2, 3], South: [2, 3, 4], East: [3, 5] };
   surveys = [];
   for (const [name, stars] of Object.entries(lists)) {

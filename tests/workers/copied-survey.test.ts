@@ -10,12 +10,12 @@ import {
   recipeOf,
 } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('copied-survey'), { threads: 1 });
+  await startWorker({ threads: 1 });
 });
 afterAll(killWorkers);
 

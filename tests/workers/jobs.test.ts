@@ -20,7 +20,7 @@ import {
   SMALL_GRID,
 } from '../support/sample';
 import { askForMaps, jobOf, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker, until } from '../support/worker';
+import { killWorkers, startWorker, until } from '../support/worker';
 
 const { query } = withDatabase();
 let actor: Actor;
@@ -30,7 +30,7 @@ beforeAll(async () => {
   const made = await createCollaborationWith(['owner']);
   collaboration = made.collaboration;
   actor = await actorOf(made.people.owner, collaboration);
-  await startWorker(await bundleWorker('jobs'), { threads: 2 });
+  await startWorker({ threads: 2 });
 });
 afterAll(killWorkers);
 

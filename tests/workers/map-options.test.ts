@@ -13,7 +13,7 @@ import { withDatabase } from '../support/database';
 import { bearer, call, createCollaborationWith, tokenOf, webAddress } from '../support/people';
 import { buildSurvey, SMALL_GRID } from '../support/sample';
 import { untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
@@ -46,8 +46,7 @@ beforeAll(async () => {
   slug = collaboration.slug;
   headers = bearer(await tokenOf(people.owner, collaboration));
   survey = await buildSurvey(collaboration.id, { name: 'Options' });
-  const main = await bundleWorker('map-options');
-  await startWorker(main, { threads: 1 });
+  await startWorker({ threads: 1 });
   await importFile('targets', TARGETS);
   await importFile('contrast-curves', CURVES);
   await settled();

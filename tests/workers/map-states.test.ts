@@ -7,7 +7,7 @@ import { withDatabase } from '../support/database';
 import { actorOf, createCollaborationWith } from '../support/people';
 import { buildCurve, buildSurvey, buildTarget, SMALL_GRID } from '../support/sample';
 import { untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 
@@ -19,7 +19,7 @@ let first: TargetRow;
 beforeAll(async () => {
   const { collaboration, people } = await createCollaborationWith(['owner']);
   actor = await actorOf(people.owner, collaboration);
-  await startWorker(await bundleWorker('map-states'), { threads: 2 });
+  await startWorker({ threads: 2 });
   survey = await buildSurvey(collaboration.id, { name: 'Sandbar' });
   first = await buildTarget(survey, { name: 'Star 1' });
   await buildTarget(survey, { name: 'Star 2', distancePc: 31 });

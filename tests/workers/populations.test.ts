@@ -16,7 +16,7 @@ import {
   recipeOf,
 } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
@@ -71,7 +71,7 @@ beforeAll(async () => {
   const made = await createCollaborationWith(['owner']);
   collaboration = made.collaboration;
   actor = await actorOf(made.people.owner, collaboration);
-  await startWorker(await bundleWorker('populations'), { threads: 2 });
+  await startWorker({ threads: 2 });
   survey = await buildSurvey(collaboration.id);
   await buildStars(survey, STARS);
   await giveMasses(HOSTS);

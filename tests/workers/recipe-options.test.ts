@@ -24,7 +24,7 @@ import {
 } from '../support/sample';
 import { questionOfRun } from '../support/study';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
@@ -59,7 +59,7 @@ beforeAll(async () => {
   const made = await createCollaborationWith(['owner']);
   collaboration = made.collaboration;
   actor = await actorOf(made.people.owner, collaboration);
-  await startWorker(await bundleWorker('recipe-options'), { threads: 2 });
+  await startWorker({ threads: 2 });
   await buildSample();
 });
 afterAll(killWorkers);

@@ -50,7 +50,7 @@ import {
 } from '../support/people';
 import { openReleaseLab, type ReleaseLab, readRelease as view } from '../support/release-lab';
 import { untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 let lab: ReleaseLab;
@@ -60,7 +60,7 @@ let release: { id: string; key: string; code: string };
 let draft: Buffer;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('releases'), { threads: 1 });
+  await startWorker({ threads: 1 });
   lab = await openReleaseLab();
   ({ run, second } = lab);
 }, 60_000);

@@ -15,7 +15,7 @@ import {
   recipeOf,
 } from '../support/sample';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 
@@ -29,7 +29,7 @@ beforeAll(async () => {
   const { collaboration, people } = await createCollaborationWith(['owner']);
   collaborationId = collaboration.id;
   actor = await actorOf(people.owner, collaboration);
-  await startWorker(await bundleWorker('samples'), { threads: 2 });
+  await startWorker({ threads: 2 });
   survey = await buildSurvey(collaborationId, { name: 'Sandbar' });
   targets = [];
   for (let i = 1; i <= 6; i++) {

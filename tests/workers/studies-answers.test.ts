@@ -16,7 +16,7 @@ import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { POPULATION } from '../support/population';
 import { buildPopulation } from '../support/sample';
 import { askToEnd, type GivenSettings, questionOfRun } from '../support/study';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 let lab: FinishedLab;
@@ -24,7 +24,7 @@ let question: RunQuestion;
 let steeper: PopulationRow;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('studies-answers'), { threads: 2 });
+  await startWorker({ threads: 2 });
   lab = await buildFinishedLab();
   question = await questionOfRun(lab.run);
   steeper = await buildPopulation(lab.collaboration.id, { ...POPULATION, massIndex: -1.31 });

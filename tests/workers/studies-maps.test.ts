@@ -15,7 +15,7 @@ import {
 } from '../support/sample';
 import { askToEnd, type GivenSettings } from '../support/study';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 const { query } = withDatabase();
 
@@ -26,7 +26,7 @@ let collaborationId: string;
 
 /** Two surveys of three stars each; one star is in both, one has a companion. */
 beforeAll(async () => {
-  await startWorker(await bundleWorker('studies-maps'), { threads: 2 });
+  await startWorker({ threads: 2 });
   const { collaboration, people } = await createCollaborationWith(['owner']);
   collaborationId = collaboration.id;
   actor = await actorOf(people.owner, collaboration);

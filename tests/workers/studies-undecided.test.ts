@@ -7,13 +7,13 @@ import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { buildAnalysis, buildCompanion } from '../support/sample';
 import { askToEnd, questionOfRun } from '../support/study';
 import { runToEnd } from '../support/work';
-import { bundleWorker, killWorkers, startWorker } from '../support/worker';
+import { killWorkers, startWorker } from '../support/worker';
 
 withDatabase();
 let lab: FinishedLab;
 
 beforeAll(async () => {
-  await startWorker(await bundleWorker('studies-undecided'), { threads: 2 });
+  await startWorker({ threads: 2 });
   lab = await buildFinishedLab();
   const target = await TargetRow.findOne({
     where: { surveyId: lab.survey.id, name: 'Star 5' },
