@@ -5,10 +5,10 @@ import { findFreePort } from './ports.mjs';
 import { chooseMail, runScript, startProduct } from './product.mjs';
 import { Supervisor } from './supervisor.mjs';
 import {
+  copyTemplate,
   emptyFolder,
   prepareTestDatabase,
   stopTestDatabase,
-  templateName,
 } from './test-database.mjs';
 import { buildWeb, isBuildFresh } from './web-build.mjs';
 
@@ -43,10 +43,7 @@ export class HardenProduct {
     }
     this.#cluster = await prepareTestDatabase({ outlivesThisProcess: false });
     const { cluster } = this.#cluster;
-    await querySuperuser(
-      cluster,
-      `create database ${this.#database} template ${templateName} owner rarebound`,
-    );
+    await copyTemplate(cluster, this.#database);
     const folder = emptyFolder(path.join(dataFolder(), 'harden', 'product'));
     this.#supervisor = new Supervisor({
       logsFolder: path.join(folder, 'logs'),

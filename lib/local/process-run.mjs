@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process';
 import { readFileSync } from 'node:fs';
+import { getPriority, setPriority } from 'node:os';
 import { endWithLauncher } from './death-signal.mjs';
 import { root } from './environment.mjs';
 
@@ -16,16 +17,18 @@ export function endRunning() {
  *
  * @param {string} command
  * @param {string[]} args
- * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, input?: string, uid?: number, gid?: number }} [options]
+ * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, input?: string, uid?: number, gid?: number,
+ *   isPatient?: boolean }} [options] isPatient: it takes what time the others leave
  * @returns {Promise<{ code: number, output: string, stdout: string }>} code is 127 when the program
  *   is missing and 128 when a signal ended it
  */
 export function run(command, args, options = {}) {
-  const { input, ...rest } = options;
+  const { input, isPatient, ...rest } = options;
   return new Promise((resolve) => {
     const [program, ...words] = endWithLauncher([command, ...args], 'TERM');
     const child = spawn(program, words, { cwd: root, ...rest, stdio: ['pipe', 'pipe', 'pipe'] });
     running.add(child);
+    if (isPatient && child.pid !== undefined) setPriority(child.pid, Math.max(10, getPriority()));
     let output = '';
     let stdout = '';
     child.stdout.setEncoding('utf8');

@@ -101,10 +101,17 @@ export function productEnvironment(/** @type {Product} */ product) {
   };
 }
 
-/** Runs one of the bundled scripts to its end. */
-export async function runScript(/** @type {Product} */ product, /** @type {string} */ name) {
+/**
+ * Runs one of the bundled scripts to its end.
+ *
+ * @param {Product} product
+ * @param {string} name
+ * @param {{ isPatient?: boolean }} [options] whether it takes what time others leave
+ */
+export async function runScript(product, name, options = {}) {
   const script = path.join(root, product.bundleFolder, `lib/local/${name}.js`);
   const { code, output, stdout } = await run(process.execPath, ['--enable-source-maps', script], {
+    ...options,
     env: productEnvironment(product),
   });
   if (code !== 0) throw new LauncherProblem(`The step "${name}" failed:\n${output.trim()}`);

@@ -10,7 +10,7 @@ import { chooseMail, productEnvironment, runScript, startProduct } from './produ
 import { Supervisor } from './supervisor.mjs';
 import { testDistFolder, testEnvironment } from './test-checks.mjs';
 import { countCommand, countPlaywright } from './test-counts.mjs';
-import { emptyFolder, templateName, testBundleFolder } from './test-database.mjs';
+import { copyTemplate, emptyFolder, testBundleFolder } from './test-database.mjs';
 import { buildWeb, isBuildFresh } from './web-build.mjs';
 
 /** @typedef {import('./test-counts.mjs').Count} Count */
@@ -27,7 +27,7 @@ const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
  * @returns {Promise<Count>}
  */
 export async function checkBuild() {
-  if (freshBuild() === null) await buildWeb(testDistFolder);
+  if (freshBuild() === null) await buildWeb(testDistFolder, { isPatient: true });
   const pages = measurePages(freshBuild() ?? testDistFolder);
   const large = pages.filter(({ bytes }) => bytes > MOST_BYTES).length;
   const head = `Compressed JavaScript of the first load; ${large} of ${pages.length} pages above ${MOST_BYTES / 1000} kB:`;
@@ -35,47 +35,67 @@ export async function checkBuild() {
 }
 
 /**
- * Runs the browser tests against a product of their own: own database with the demo in it, own
- * ports, own mailbox.
+ * The demonstration in a database of the browser tests' own, made by scripts alone: no page of it is
+ * asked for yet, so that the web part may still be building.
+ *
+ * @typedef {{ folder: string, database: string, databaseUrl: () => string, bundleFolder: string,
+ *   secrets: Record<string, string>, isDevelopment: boolean }} Demonstration
+ * @param {import('./cluster-files.mjs').Cluster} cluster
+ * @returns {Promise<Demonstration>}
+ */
+export async function makeDemonstration(cluster) {
+  const database = `test_${process.pid}_browser`;
+  await copyTemplate(cluster, database);
+  const demonstration = {
+    folder: emptyFolder(path.join(dataFolder(), 'test-browser')),
+    database,
+    databaseUrl: () => databaseAddress(cluster, database),
+    bundleFolder: testBundleFolder,
+    secrets: { NEXTAUTH_SECRET: 'only-for-the-browser-tests-0123456789' },
+    isDevelopment: false,
+  };
+  // Nobody listens there yet: what the seed sends waits for the mailbox of the product.
+  await runScript(await placeOf(demonstration), 'seed', { isPatient: true });
+  return demonstration;
+}
+
+/** Addresses that are free now, and the newest build. */
+async function placeOf(/** @type {Demonstration} */ demonstration) {
+  const port = await findFreePort(3310);
+  return {
+    ...demonstration,
+    distFolder: freshBuild() ?? testDistFolder,
+    port,
+    address: `http://127.0.0.1:${port}`,
+    mail: await chooseMail(port, ''),
+  };
+}
+
+/**
+ * Runs the browser tests against a product of their own: own database with the demonstration in it,
+ * own ports, own mailbox.
  *
  * @param {import('./cluster-files.mjs').Cluster} cluster
- * @param {{ reportFile: string, onSupervisor: (supervisor: Supervisor) => void }} options
+ * @param {{ demonstration: Promise<Demonstration>, reportFile: string,
+ *   onSupervisor: (supervisor: Supervisor) => void }} options
  * @returns {Promise<Count>}
  */
-export async function runBrowserTests(cluster, { reportFile, onSupervisor }) {
-  const distFolder = freshBuild();
-  if (distFolder === null) throw new LauncherProblem('There is no build of the web part to test');
+export async function runBrowserTests(cluster, { demonstration, reportFile, onSupervisor }) {
+  if (freshBuild() === null) throw new LauncherProblem('There is no build of the web part to test');
   if (!existsSync(chromium)) await installDebianPackage('chromium', 'for the browser tests');
-  const folder = emptyFolder(path.join(dataFolder(), 'test-browser'));
-  const database = `test_${process.pid}_browser`;
-  await querySuperuser(
-    cluster,
-    `create database ${database} template ${templateName} owner rarebound`,
-  );
+  const made = await demonstration;
   const supervisor = new Supervisor({
-    logsFolder: path.join(folder, 'logs'),
+    logsFolder: path.join(made.folder, 'logs'),
     say: (line) => process.stdout.write(`    ${line}\n`),
   });
   onSupervisor(supervisor);
   try {
-    const port = await findFreePort(3310);
-    const product = {
-      databaseUrl: () => databaseAddress(cluster, database),
-      folder,
-      bundleFolder: testBundleFolder,
-      distFolder,
-      port,
-      address: `http://127.0.0.1:${port}`,
-      mail: await chooseMail(port, ''),
-      secrets: { NEXTAUTH_SECRET: 'only-for-the-browser-tests-0123456789' },
-      isDevelopment: false,
-    };
-    await runScript(product, 'seed');
+    const product = await placeOf(made);
     await startProduct(supervisor, product);
     return await runPlaywright(product, reportFile);
   } finally {
     await supervisor.stop();
-    await querySuperuser(cluster, `drop database if exists ${database} with (force)`);
+    await querySuperuser(cluster, `drop database if exists ${made.database} with (force)`);
   }
 }
 

@@ -13,10 +13,10 @@ import {
 import { dataFolder, folderDigest, LauncherProblem, root } from './environment.mjs';
 import { withExclusive } from './exclusive.mjs';
 import { fingerprint } from './fingerprint.mjs';
-import { isAlive, run } from './process-run.mjs';
+import { isAlive, run, wait } from './process-run.mjs';
 
 export const testBundleFolder = 'dist/test';
-export const templateName = 'rarebound_template';
+const templateName = 'rarebound_template';
 const maintenanceName = 'rarebound_tests';
 const schemaSources = ['migrations', 'lib/local/migrate.ts', 'package-lock.json'];
 
@@ -86,6 +86,31 @@ async function ensureTemplate(cluster) {
      alter database ${unfinished} rename to ${templateName};
      comment on database ${templateName} is '${wanted}'`,
   );
+}
+
+/**
+ * A migrated, empty database of its own for a product, copied from the template.
+ *
+ * @param {import('./cluster-files.mjs').Cluster} cluster
+ * @param {string} name
+ */
+export async function copyTemplate(cluster, name) {
+  const end = Date.now() + 30_000;
+  for (;;) {
+    try {
+      await querySuperuser(
+        cluster,
+        `create database ${name} template ${templateName} strategy file_copy owner rarebound`,
+      );
+      return;
+    } catch (error) {
+      // A test file may be copying it, which one at a time can.
+      if (!error.message.includes('is being accessed by other users') || Date.now() > end) {
+        throw error;
+      }
+      await wait(100);
+    }
+  }
 }
 
 /** Runs the migrations, bundled for the tests, on a database. */

@@ -5,7 +5,7 @@ import { dataFolder, folderDigest, LauncherProblem, runCommand } from './environ
 import { holdExclusively } from './exclusive.mjs';
 import { ensurePackages } from './packages.mjs';
 import { endRunning } from './process-run.mjs';
-import { checkBuild, runBrowserTests } from './test-browser.mjs';
+import { checkBuild, makeDemonstration, runBrowserTests } from './test-browser.mjs';
 import {
   checkLint,
   checkLockfile,
@@ -24,19 +24,29 @@ const reportOf = (/** @type {string} */ name) => path.join(reports, `${name}.jso
 const say = (/** @type {string} */ line) => process.stdout.write(`${line}\n`);
 
 let prepared = null;
+let demonstration = null;
 let supervisor = null;
 
-/** The cluster is prepared by the first step that needs it. */
+/** The cluster and the bundled scripts are prepared by the first step that needs them. */
 function prepareOnce() {
-  prepared ??= prepareTestDatabase({ outlivesThisProcess: false });
+  prepared ??= prepareTestDatabase({ outlivesThisProcess: false }).then(async (database) => {
+    await bundleScripts(testBundleFolder);
+    return database;
+  });
   return prepared;
+}
+
+function demonstrateOnce() {
+  demonstration ??= prepareOnce().then(({ cluster }) => makeDemonstration(cluster));
+  // The browser tests, which wait for it, say why there is none.
+  demonstration.catch(() => {});
+  return demonstration;
 }
 
 async function databaseTests(name) {
   const { url } = await prepareOnce();
-  await bundleScripts(testBundleFolder);
   return runVitest(name, {
-    reportFile: reportOf(name),
+    reportFile: reportOf(name.replace('*', '')),
     environment: testEnvironment({ TEST_DATABASE_URL: url }),
   });
 }
@@ -46,8 +56,8 @@ const plainTests = (/** @type {string} */ name) =>
 
 async function browserTests() {
   const { cluster } = await prepareOnce();
-  await bundleScripts(testBundleFolder);
   return runBrowserTests(cluster, {
+    demonstration: demonstrateOnce(),
     reportFile: reportOf('browser'),
     onSupervisor: (started) => {
       supervisor = started;
@@ -55,21 +65,31 @@ async function browserTests() {
   });
 }
 
-/** What is quick to run and to mend comes first. */
-const steps = {
-  lint: checkLint,
-  ranks: checkRanks,
-  lockfile: checkLockfile,
-  types: checkTypes,
-  'pure-types': checkPureTypes,
-  unit: () => plainTests('unit'),
-  reference: () => plainTests('reference'),
-  'live-reference': () => checkLiveReference(reportOf('live-reference')),
-  database: () => databaseTests('database'),
-  workers: () => databaseTests('workers'),
-  build: checkBuild,
-  browser: browserTests,
+/** In the order in which they are run; what is quick to run and to mend comes first. */
+const groups = {
+  /** Of one thread each, which two cores can share. */
+  abreast: {
+    types: checkTypes,
+    'live-reference': () => checkLiveReference(reportOf('live-reference')),
+    lint: checkLint,
+    ranks: checkRanks,
+    lockfile: checkLockfile,
+    'pure-types': checkPureTypes,
+  },
+  /** They take every core. */
+  full: {
+    unit: () => plainTests('unit'),
+    reference: () => plainTests('reference'),
+  },
+  /** They wait for a database or a worker at times, and leave that time to `behind`. */
+  waiting: {
+    database: () => databaseTests('database*'),
+    workers: () => databaseTests('workers'),
+  },
+  behind: { build: checkBuild },
+  last: { browser: browserTests },
 };
+const steps = Object.assign({}, ...Object.values(groups));
 
 async function runStep(name) {
   const start = Date.now();
@@ -94,22 +114,25 @@ async function cleanUp() {
   if (database?.started) await stopTestDatabase();
 }
 
-/** Steps of one thread each, which two cores can share; the others use every core themselves. */
-const abreast = ['types', 'live-reference', 'lint', 'ranks', 'lockfile', 'pure-types'];
-
 async function countSteps(/** @type {string[]} */ names) {
-  const isWanted = (/** @type {string} */ name) => names.length === 0 || names.includes(name);
   const counts = [];
-  const waiting = abreast.filter(isWanted);
-  const lane = async () => {
+  const isWanted = (/** @type {string} */ name) => names.length === 0 || names.includes(name);
+  const wantedOf = (/** @type {keyof typeof groups} */ group) =>
+    Object.keys(groups[group]).filter(isWanted);
+  const lane = async (/** @type {string[]} */ waiting) => {
     for (let name = waiting.shift(); name !== undefined; name = waiting.shift()) {
       counts.push(await runStep(name));
     }
   };
-  await Promise.all([lane(), lane()]);
-  for (const name of Object.keys(steps)) {
-    if (isWanted(name) && !abreast.includes(name)) counts.push(await runStep(name));
-  }
+  const behind = async () => {
+    await lane(wantedOf('behind'));
+    if (isWanted('browser')) await demonstrateOnce().catch(() => {});
+  };
+  const abreast = wantedOf('abreast');
+  await Promise.all([lane(abreast), lane(abreast)]);
+  await lane(wantedOf('full'));
+  await Promise.all([lane(wantedOf('waiting')), behind()]);
+  await lane(wantedOf('last'));
   return counts;
 }
 
