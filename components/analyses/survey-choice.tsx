@@ -1,8 +1,7 @@
 'use client';
 
 import type { ReactNode } from 'react';
-import { seriesColour } from '@/components/charts/series';
-import { CheckboxField } from '@/components/ui/checkbox-field';
+import { SurveyCheckbox } from '@/components/surveys/survey-checkbox';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -46,26 +45,11 @@ export function SurveyChoice(props: SurveyChoiceProps) {
       ) : (
         <div className="grid gap-1">
           {surveys.map((survey) => (
-            <CheckboxField
+            <SurveyCheckbox
               key={survey.id}
-              checked={chosen.includes(survey.id)}
-              onChange={(event) =>
-                onChange(
-                  event.target.checked
-                    ? [...chosen, survey.id]
-                    : chosen.filter((id) => id !== survey.id),
-                )
-              }
-              label={
-                <span className="inline-flex items-center gap-2 font-semibold">
-                  <span
-                    aria-hidden="true"
-                    className="size-[11px]"
-                    style={{ backgroundColor: seriesColour(survey.position) }}
-                  />
-                  {survey.name}
-                </span>
-              }
+              survey={survey}
+              chosen={chosen}
+              onChange={onChange}
               hint={surveyWords(survey)}
             />
           ))}

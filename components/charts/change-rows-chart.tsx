@@ -9,7 +9,7 @@ import { fitText } from './fit-text';
 import { spokenLimit } from './limit-bands';
 import { scaleLinear, scaleLog } from './scales';
 import { textWidth } from './text-width';
-import { linearTicks, logTicks, withUnit } from './ticks';
+import { linearTicks, logTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface ChangeRow {
@@ -140,7 +140,7 @@ export function ChangeRowsChart(props: ChangeRowsChartProps) {
         );
       })}
       <BottomAxis
-        ticks={withUnit(ticks, quantity === 'host_fraction' ? '\u2009%' : '')}
+        ticks={withRateUnit(ticks, quantity)}
         scale={(percentage) => x(percentage / 100)}
         y={frame.bottom}
         x0={frame.left}

@@ -8,7 +8,7 @@ import { tableOfColumns } from './data-table';
 import type { Box, MapData } from './map-contours';
 import { MapAxes, MapBands, type MapFrame, mapFrame } from './map-layers';
 import { areaPath } from './paths';
-import { type MapRange, RangeHandles } from './range-box';
+import { type MapRange, mapEnds, RangeHandles } from './range-box';
 import { CursorRing } from './reading-marks';
 import { scaleLinear } from './scales';
 import { useWidth } from './use-width';
@@ -105,12 +105,7 @@ export function CompanionScatter(props: CompanionScatterProps) {
               width={width}
               height={total}
               range={range}
-              bounds={{
-                massMinMjup: map.massMjup[0],
-                massMaxMjup: map.massMjup[map.massMjup.length - 1],
-                semiMajorAxisMinAu: map.semiMajorAxisAu[0],
-                semiMajorAxisMaxAu: map.semiMajorAxisAu[map.semiMajorAxisAu.length - 1],
-              }}
+              bounds={mapEnds(map)}
               onChange={onRangeChange}
             />
           )}

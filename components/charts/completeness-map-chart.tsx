@@ -8,7 +8,7 @@ import { tableOfField } from './data-table';
 import { DetectionMarks, type MapDetection } from './detection-marks';
 import type { Box, MapData } from './map-contours';
 import { ContourNumbers, contourLabels, MapAxes, MapBands, mapFrame } from './map-layers';
-import { type MapRange, RangeHandles } from './range-box';
+import { type MapRange, mapEnds, RangeHandles } from './range-box';
 import { CursorRing } from './reading-marks';
 import { useWidth } from './use-width';
 
@@ -148,15 +148,6 @@ function rangePx(range: MapRange, frame: ReturnType<typeof mapFrame>): Box {
     right: frame.x(range.semiMajorAxisMaxAu),
     top: frame.y(range.massMaxMjup),
     bottom: frame.y(range.massMinMjup),
-  };
-}
-
-function mapEnds({ massMjup, semiMajorAxisAu }: MapData): MapRange {
-  return {
-    massMinMjup: massMjup[0],
-    massMaxMjup: massMjup[massMjup.length - 1],
-    semiMajorAxisMinAu: semiMajorAxisAu[0],
-    semiMajorAxisMaxAu: semiMajorAxisAu[semiMajorAxisAu.length - 1],
   };
 }
 

@@ -5,7 +5,7 @@ import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -30,12 +30,7 @@ export function CountsChart(props: CountsChartProps) {
   const [measure, width] = useWidth<HTMLDivElement>(820);
   const [at, setAt] = useState<ReadPlace>();
   const shown = countsShown(atRate, predictive, counted);
-  const frame = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const top = Math.max(...atRate, ...predictive) * 1.08;
   const x = scaleLinear([-0.5, shown - 0.5], [frame.left, frame.right]);
   const y = scaleLinear([0, top], [frame.bottom, frame.top]);

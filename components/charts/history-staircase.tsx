@@ -8,7 +8,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import { CursorMarks } from './reading-marks';
 import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface HistoryStep {
@@ -52,7 +52,6 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
   const x = scaleLinear([-0.08 * end, end], [frame.left, frame.right]);
   const peak = Math.max(1e-6, ...steps.map(({ limit }) => limit));
   const y = scaleLinear([0, peak], [frame.bottom, frame.top]);
-  const unit = quantity === 'host_fraction' ? '\u2009%' : '';
   const rates = linearTicks(0, 100 * peak, frame.bottom - frame.top, 60).filter(
     (tick) => tick.isMajor,
   );
@@ -107,7 +106,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
       ]}
     >
       <LeftAxis
-        ticks={withUnit(rates, unit)}
+        ticks={withRateUnit(rates, quantity)}
         scale={(percent) => y(percent / 100)}
         x={frame.left}
         y0={frame.bottom}

@@ -9,7 +9,7 @@ import { ChartReadout, type ReadPlace } from './chart-readout';
 import { tableOfField } from './data-table';
 import { type Box, boxesMeet } from './map-contours';
 import { CursorRing } from './reading-marks';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { linearTicks } from './ticks';
 import { useWidth } from './use-width';
 
@@ -38,12 +38,7 @@ export function IndexPlane(props: IndexPlaneProps) {
   const { height = 230 } = props;
   const [measure, width] = useWidth<HTMLDivElement>(440);
   const [at, setAt] = useState<ReadPlace>();
-  const frame = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const ends = (values: Float64Array): [number, number] => [values[0], values[values.length - 1]];
   const x = scaleLinear(ends(semiMajorAxisIndex), [frame.left, frame.right]);
   const y = scaleLinear(ends(massIndex), [frame.bottom, frame.top]);

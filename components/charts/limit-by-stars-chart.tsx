@@ -12,11 +12,10 @@ import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { spokenLimit } from './limit-bands';
-import type { Box } from './map-contours';
 import { bandPath, linePath } from './paths';
-import { scaleLog } from './scales';
+import { frameWithin, scaleLog } from './scales';
 import { textWidth } from './text-width';
-import { logTicks, withUnit } from './ticks';
+import { logTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 import { ForecastMark } from './yield-chart';
 
@@ -41,12 +40,7 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
   const { stars, limitIfNone, low, high, wanted, quantity, levelLabel } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
   const [at, setAt] = useState<ReadPlace>();
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const needed = neededInside(props);
   const ends = [stars[0], 1.1 * Math.max(stars[stars.length - 1], needed ?? 1, 2 * stars[0])];
   const limits = [wanted, ...limitIfNone, ...low, ...high];
@@ -87,10 +81,7 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
       </text>
       <ForecastMark x={frame.right} y={34} />
       <LeftAxis
-        ticks={withUnit(
-          logTicks(100 * least, 100 * most, frame.bottom - frame.top),
-          quantity === 'host_fraction' ? '\u2009%' : '',
-        )}
+        ticks={withRateUnit(logTicks(100 * least, 100 * most, frame.bottom - frame.top), quantity)}
         scale={(percentage) => y(percentage / 100)}
         x={frame.left}
         y0={frame.bottom}

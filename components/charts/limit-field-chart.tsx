@@ -9,7 +9,7 @@ import { DetectionMarks, type MapDetection } from './detection-marks';
 import { spokenLimit } from './limit-bands';
 import { LimitField } from './limit-field';
 import type { Box } from './map-contours';
-import { scaleLinear, scaleLog } from './scales';
+import { frameWithin, scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks } from './ticks';
 import { useWidth } from './use-width';
 
@@ -55,12 +55,7 @@ export function LimitFieldChart(props: LimitFieldChartProps) {
   const [at, setAt] = useState<ReadPlace>();
   const height = props.height ?? (width < 520 ? 340 : 470);
   const plot = useMemo(() => {
-    const frame: Box = {
-      left: margin.left,
-      right: width - margin.right,
-      top: margin.top,
-      bottom: height - margin.bottom,
-    };
+    const frame = frameWithin(margin, width, height);
     const x = axisScale(xAxis, frame.left, frame.right);
     const y = axisScale(yAxis, frame.bottom, frame.top);
     return { frame, x, y, columnsPx: xAxis.at.map(x), rowsPx: yAxis.at.map(y) };

@@ -9,9 +9,9 @@ import { spokenLimit } from './limit-bands';
 import type { FieldAxis } from './limit-field-chart';
 import type { Box } from './map-contours';
 import { linePath } from './paths';
-import { scaleLinear, scaleLog } from './scales';
+import { frameWithin, scaleLinear, scaleLog } from './scales';
 import { textWidth } from './text-width';
-import { linearTicks, logTicks, withUnit } from './ticks';
+import { linearTicks, logTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface LimitSweepChartProps {
@@ -40,12 +40,7 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
   const [measure, width] = useWidth<HTMLDivElement>(900);
   const [at, setAt] = useState<ReadPlace>();
   const height = props.height ?? (width < 520 ? 320 : 400);
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const ends = [axis.at[0], axis.at[axis.at.length - 1]];
   const x = (axis.isLog ? scaleLog : scaleLinear)(ends, [frame.left, frame.right]);
   const all = [...limit, ...limitZero];
@@ -88,7 +83,7 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
       }
     >
       <LeftAxis
-        ticks={withUnit(yTicks, quantity === 'host_fraction' ? '\u2009%' : '')}
+        ticks={withRateUnit(yTicks, quantity)}
         scale={(percentage) => y(percentage / 100)}
         x={frame.left}
         y0={frame.bottom}

@@ -7,7 +7,7 @@ import { ChartFigure } from './chart-figure';
 import { PointReadout } from './chart-readout';
 import type { Box } from './map-contours';
 import { type MotionEpoch, type MotionPlace, motionColumns, motionTable } from './motion-tables';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
@@ -36,12 +36,7 @@ export function MotionTrackChart({ name, epochs, track }: MotionTrackChartProps)
   const [measure, width] = useWidth<HTMLDivElement>(720);
   const [at, setAt] = useState<number>();
   const height = Math.round(Math.min(520, Math.max(320, width * 0.66)));
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const { x, y } = scalesOf(epochs, track, frame);
   const place = ({ eastArcsec, northArcsec }: MotionPlace) => ({
     x: x(eastArcsec),

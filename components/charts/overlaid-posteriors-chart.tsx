@@ -12,7 +12,7 @@ import { limitWithLevel } from './posterior-words';
 import type { RateCurve } from './rate-curve';
 import { CursorMarks } from './reading-marks';
 import { scaleLinear } from './scales';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface NamedPosterior {
@@ -129,9 +129,9 @@ export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
         />
       )}
       <BottomAxis
-        ticks={withUnit(
+        ticks={withRateUnit(
           linearTicks(0, 100 * max, frame.right - frame.left, width < 560 ? 72 : 96),
-          quantity === 'host_fraction' ? '\u2009%' : '',
+          quantity,
         )}
         scale={(percent) => x(percent / 100)}
         y={frame.bottom}

@@ -19,7 +19,7 @@ import {
 } from './posterior-words';
 import { CursorMarks } from './reading-marks';
 import { scaleLinear } from './scales';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export type PosteriorView = 'density' | 'cumulative';
@@ -62,7 +62,6 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
 
   const picked = useMemo(() => readPoints(curve.rate.length), [curve]);
   const columns = picked.map((point) => x(curve.rate[point]));
-  const unit = quantity === 'host_fraction' ? '\u2009%' : '';
   const ticks = linearTicks(0, 100 * max, frame.right - frame.left, isNarrow ? 72 : 96);
   const flagTop = isCumulative
     ? y(credibleLevel)
@@ -172,7 +171,7 @@ export function PosteriorChart({ view, onViewChange, height, ...data }: Posterio
         />
       )}
       <BottomAxis
-        ticks={withUnit(ticks, unit)}
+        ticks={withRateUnit(ticks, quantity)}
         scale={(percent) => x(percent / 100)}
         y={frame.bottom}
         x0={frame.left}

@@ -2,6 +2,7 @@
 
 import { type KeyboardEvent, type PointerEvent, useRef } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
+import type { MapData } from './map-contours';
 import type { MapFrame } from './map-layers';
 
 export interface MapRange {
@@ -143,3 +144,11 @@ export function RangeHandles({ frame, width, height, range, bounds, onChange }: 
     </svg>
   );
 }
+
+/** What a map covers, end to end. */
+export const mapEnds = ({ massMjup, semiMajorAxisAu }: MapData): MapRange => ({
+  massMinMjup: massMjup[0],
+  massMaxMjup: massMjup[massMjup.length - 1],
+  semiMajorAxisMinAu: semiMajorAxisAu[0],
+  semiMajorAxisMaxAu: semiMajorAxisAu[semiMajorAxisAu.length - 1],
+});

@@ -6,8 +6,7 @@ import { BottomAxis, LeftAxis } from './axes';
 import { binomialBand } from './binomial-band';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
-import type { Box } from './map-contours';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -27,12 +26,7 @@ export function RankHistogramChart(props: RankHistogramChartProps) {
   const { bins } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
   const [at, setAt] = useState<ReadPlace>();
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const { total, even, band } = evenBins(bins);
   const most = Math.max(...bins, band[1]) * 1.08;
   const x = scaleLinear([0, bins.length], [frame.left, frame.right]);

@@ -7,7 +7,7 @@ import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { scaleLinear } from './scales';
 import { textWidth } from './text-width';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface RuleRow {
@@ -132,10 +132,7 @@ export function RuleIntervalsChart(props: RuleIntervalsChartProps) {
         </g>
       ))}
       <BottomAxis
-        ticks={withUnit(
-          linearTicks(0, 100 * max, frame.right - frame.left),
-          quantity === 'host_fraction' ? '\u2009%' : '',
-        )}
+        ticks={withRateUnit(linearTicks(0, 100 * max, frame.right - frame.left), quantity)}
         scale={(percentage) => x(percentage / 100)}
         y={frame.bottom}
         x0={frame.left}

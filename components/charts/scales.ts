@@ -1,3 +1,5 @@
+import type { Box } from './map-contours';
+
 /** Places of values along an axis; straight or logarithmic between its two ends. */
 export interface Scale {
   /** [px] */
@@ -51,3 +53,11 @@ export function scaleLinear(domain: Ends, range: Ends): Scale {
 export function scaleLog(domain: Ends, range: Ends): Scale {
   return scaleOf(logarithmic, domain, range);
 }
+
+/** What is left for a drawing within its margins [px]. */
+export const frameWithin = (margin: Box, width: number, height: number): Box => ({
+  left: margin.left,
+  right: width - margin.right,
+  top: margin.top,
+  bottom: height - margin.bottom,
+});

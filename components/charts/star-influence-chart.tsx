@@ -20,10 +20,10 @@ import {
 } from './influence-panels';
 import { spokenLimit } from './limit-bands';
 import type { Box } from './map-contours';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { seriesColour } from './series';
 import { textWidth } from './text-width';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface StarInfluenceChartProps {
@@ -45,12 +45,7 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
   const [measure, width] = useWidth<HTMLDivElement>(900);
   const [at, setAt] = useState<number>();
   const height = width < 520 ? 380 : 440;
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const stars = useMemo(
     () => [...props.stars].sort((a, b) => a.probability - b.probability),
     [props.stars],
@@ -162,11 +157,11 @@ function LimitAxis({
   const spacing = panel.bottom - panel.top > 150 ? 46 : 30;
   return (
     <LeftAxis
-      ticks={withUnit(
+      ticks={withRateUnit(
         linearTicks(100 * low, 100 * high, panel.bottom - panel.top, spacing).filter(
           ({ isMajor }) => isMajor,
         ),
-        quantity === 'host_fraction' ? '\u2009%' : '',
+        quantity,
       )}
       scale={(percentage) => panel.y(percentage / 100)}
       x={frame.left}

@@ -7,7 +7,7 @@ import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import type { Box } from './map-contours';
 import { scaleLinear } from './scales';
-import { linearTicks, withUnit } from './ticks';
+import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface StepsChartProps {
@@ -106,10 +106,7 @@ export function StepsChart(props: StepsChartProps) {
         );
       })}
       <BottomAxis
-        ticks={withUnit(
-          linearTicks(0, 100 * most, frame.right - frame.left),
-          quantity === 'host_fraction' ? '\u2009%' : '',
-        )}
+        ticks={withRateUnit(linearTicks(0, 100 * most, frame.right - frame.left), quantity)}
         scale={(percent) => x(percent / 100)}
         y={frame.bottom}
         x0={frame.left}

@@ -1,4 +1,4 @@
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlain, type RateQuantity } from '@/lib/quantities/display';
 
 export interface Tick {
   value: number;
@@ -95,3 +95,7 @@ export function withUnit(ticks: Tick[], unit: string): Tick[] {
     index === last ? { ...tick, label: `${tick.label}${unit}` } : tick,
   );
 }
+
+/** The unit of an axis of rates, whose ticks stand in percent; planets per 100 stars need a name. */
+export const withRateUnit = (ticks: Tick[], quantity: RateQuantity): Tick[] =>
+  withUnit(ticks, quantity === 'host_fraction' ? '\u2009%' : '');

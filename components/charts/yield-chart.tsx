@@ -5,8 +5,7 @@ import { formatPercent, formatPlain, formatSignificant } from '@/lib/quantities/
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
-import type { Box } from './map-contours';
-import { scaleLinear } from './scales';
+import { frameWithin, scaleLinear } from './scales';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -29,12 +28,7 @@ export function YieldChart(props: YieldChartProps) {
   const { distribution, interval68, rateLabel } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
   const [at, setAt] = useState<ReadPlace>();
-  const frame: Box = {
-    left: margin.left,
-    right: width - margin.right,
-    top: margin.top,
-    bottom: height - margin.bottom,
-  };
+  const frame = frameWithin(margin, width, height);
   const shown = countsWorthDrawing(distribution);
   const counts = Array.from({ length: shown }, (_, n) => n);
   const top = Math.max(...distribution.slice(0, shown)) * 1.08;

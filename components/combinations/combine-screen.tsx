@@ -8,14 +8,13 @@ import {
   useCombinations,
 } from '@/components/hooks/use-combinations';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
-import { Button } from '@/components/ui/button';
+import { SaveVersion, useVersionSave } from '@/components/samples/save-version';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAction } from '@/components/ui/text-action';
-import { TextField } from '@/components/ui/text-field';
 import { ruleNames } from '@/lib/schemas/combination-words';
 import type {
   CombinationDefinition,
@@ -56,42 +55,30 @@ export function CombineScreen({
     starRules: [],
     grid: { choice: 'common' },
   });
-  const [open, setOpen] = useState<CombinationView>();
-  const [name, setName] = useState('');
-  const [busy, setBusy] = useState<'new' | 'version'>();
-  const [problem, setProblem] = useState<string>();
   const checked = useSchema(loadSchema)?.safeParse(draft);
   const definition = checked?.data;
   const { data: preview, error, isLoading } = useCombinationPreview(collaboration, definition);
+  const saving = useVersionSave<CombinationView>(async ({ name, versionOf }) => {
+    if (!definition) throw new Error('what is saved was not checked');
+    const saved = await createCombination(collaboration, { name, definition, versionOf });
+    await mutate();
+    return saved;
+  });
+  const { open } = saving;
   const change = (part: Partial<CombinationDefinition>) => setDraft({ ...draft, ...part });
   const fault = !checked
     ? CHECKS_COME
     : checked.error
       ? `${checked.error.issues[0].message}.`
-      : name.trim() === ''
+      : saving.name.trim() === ''
         ? 'Give it a name first.'
         : canCombine
           ? undefined
           : 'A statistician, a collaborator or an owner saves combinations.';
 
   const show = (combination: CombinationView) => {
-    setOpen(combination);
+    saving.show(combination);
     setDraft(combination.definition);
-    setName(combination.name);
-  };
-  const save = async (versionOf: number | undefined) => {
-    if (!definition) return;
-    setBusy(versionOf === undefined ? 'new' : 'version');
-    setProblem(undefined);
-    try {
-      const saved = await createCombination(collaboration, { name, definition, versionOf });
-      await mutate();
-      setOpen(saved);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(undefined);
-    }
   };
   const takeSurveys = (surveyIds: string[]) =>
     change({
@@ -113,7 +100,7 @@ export function CombineScreen({
             number={1}
             title="Surveys and rule"
             context={open ? `${open.key}, version ${open.version}` : 'a new combination'}
-            tools={open && <TextAction onClick={() => setOpen(undefined)}>As a new one</TextAction>}
+            tools={open && <TextAction onClick={saving.close}>As a new one</TextAction>}
           />
           <div className="grid gap-5">
             <OrderChoice surveys={surveys} chosen={draft.surveyIds} onChange={takeSurveys} />
@@ -145,42 +132,18 @@ export function CombineScreen({
                 })),
               ]}
             />
-            <TextField
-              label="Name"
-              value={name}
-              maxLength={100}
-              onChange={(event) => setName(event.target.value)}
-            />
-            {problem !== undefined && (
-              <Notice tone="bad" title="It was not saved." isAnnounced>
-                {problem}
-              </Notice>
-            )}
-            <div className="flex flex-wrap gap-2">
-              {open?.isLatest && (
-                <Button
-                  variant="primary"
-                  disabledReason={fault}
-                  isBusy={busy === 'version'}
-                  onClick={() => save(open.number)}
-                >
-                  Save version {open.version + 1} of {open.key}
-                </Button>
-              )}
-              <Button
-                variant={open?.isLatest ? 'normal' : 'primary'}
-                disabledReason={fault}
-                isBusy={busy === 'new'}
-                onClick={() => save(undefined)}
-              >
-                Save as a new combination
-              </Button>
+            <SaveVersion
+              saving={saving}
+              noun="combination"
+              canSaveVersion={open?.isLatest === true}
+              fault={fault}
+            >
               {open && (
                 <LinkButton href={`/${collaboration}/analyses/new?combination=${open.id}`}>
                   New analysis with {open.key}
                 </LinkButton>
               )}
-            </div>
+            </SaveVersion>
           </div>
         </section>
         <div className="grid min-w-0 content-start gap-8">

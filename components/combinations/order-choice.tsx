@@ -1,7 +1,6 @@
 'use client';
 
-import { seriesColour } from '@/components/charts/series';
-import { CheckboxField } from '@/components/ui/checkbox-field';
+import { SurveyCheckbox } from '@/components/surveys/survey-checkbox';
 import { TextAction } from '@/components/ui/text-action';
 import type { SurveyView } from '@/lib/schemas/surveys';
 
@@ -33,27 +32,12 @@ export function OrderChoice({ surveys, chosen, onChange }: OrderChoiceProps) {
         const place = chosen.indexOf(survey.id);
         return (
           <div key={survey.id} className="flex items-center justify-between gap-3">
-            <CheckboxField
-              checked={place >= 0}
-              onChange={(event) =>
-                onChange(
-                  event.target.checked
-                    ? [...chosen, survey.id]
-                    : chosen.filter((id) => id !== survey.id),
-                )
-              }
-              label={
-                <span className="inline-flex items-center gap-2">
-                  <span
-                    aria-hidden="true"
-                    className="size-[11px]"
-                    style={{ backgroundColor: seriesColour(survey.position) }}
-                  />
-                  {place >= 0 && <span className="text-ink3">{place + 1}</span>}
-                  {survey.name}
-                  <span className="text-ink3 text-note">{survey.targets} targets</span>
-                </span>
-              }
+            <SurveyCheckbox
+              survey={survey}
+              chosen={chosen}
+              onChange={onChange}
+              before={place >= 0 && <span className="text-ink3">{place + 1}</span>}
+              after={<span className="text-ink3 text-note">{survey.targets} targets</span>}
             />
             {place > 0 && (
               <TextAction onClick={() => raise(survey.id)}>

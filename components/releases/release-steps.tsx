@@ -84,71 +84,85 @@ function CheckStep({ release, busy, onStep }: StepsProps) {
   );
 }
 
+/** A step that one person takes: by whom and when, else why not yet. */
+function TakenStep({
+  step,
+  title,
+  word,
+  taken,
+  mayTake,
+  whyNot,
+  kind = 'ok',
+  ...props
+}: StepsProps & {
+  step: ReleaseStep;
+  title: string;
+  word: string;
+  taken: { by: string; at: string } | null;
+  mayTake: boolean;
+  whyNot: string | null | undefined;
+  kind?: StateKind;
+}) {
+  return (
+    <Step
+      kind={taken ? kind : 'waiting'}
+      title={title}
+      action={
+        mayTake && (
+          <Button
+            size="small"
+            variant="primary"
+            onClick={() => props.onStep(step)}
+            isBusy={props.busy === step}
+          >
+            {word}
+          </Button>
+        )
+      }
+    >
+      {taken ? `${taken.by}, ${longDay(taken.at)}` : whyNot}
+    </Step>
+  );
+}
+
 /** The four steps of a release, each with who took it or who may. */
 export function ReleaseSteps(props: StepsProps) {
-  const { release, busy, onStep } = props;
-  const { signedOff, agreed, published, can, state } = release;
+  const { signedOff, agreed, published, can, state } = props.release;
   return (
     <ol>
-      <Step
-        kind={signedOff ? 'ok' : 'waiting'}
+      <TakenStep
+        {...props}
+        step="sign-off"
         title="A statistician signs it off"
-        action={
-          can.signOff && (
-            <Button
-              size="small"
-              variant="primary"
-              onClick={() => onStep('sign-off')}
-              isBusy={busy === 'sign-off'}
-            >
-              Sign off
-            </Button>
-          )
-        }
-      >
-        {signedOff ? `${signedOff.by}, ${longDay(signedOff.at)}` : can.whyNotSignOff}
-      </Step>
-      <Step
-        kind={agreed ? 'ok' : 'waiting'}
+        word="Sign off"
+        taken={signedOff}
+        mayTake={can.signOff}
+        whyNot={can.whyNotSignOff}
+      />
+      <TakenStep
+        {...props}
+        step="agree"
         title="An author or an owner agrees"
-        action={
-          can.agree && (
-            <Button
-              size="small"
-              variant="primary"
-              onClick={() => onStep('agree')}
-              isBusy={busy === 'agree'}
-            >
-              Agree
-            </Button>
-          )
-        }
-      >
-        {agreed ? `${agreed.by}, ${longDay(agreed.at)}` : can.whyNotAgree}
-      </Step>
+        word="Agree"
+        taken={agreed}
+        mayTake={can.agree}
+        whyNot={can.whyNotAgree}
+      />
       <CheckStep {...props} />
-      <Step
-        kind={published ? 'released' : 'waiting'}
+      <TakenStep
+        {...props}
+        step="publish"
         title="Published"
-        action={
-          can.publish && (
-            <Button
-              size="small"
-              variant="primary"
-              onClick={() => onStep('publish')}
-              isBusy={busy === 'publish'}
-            >
-              Publish
-            </Button>
-          )
-        }
-      >
-        {published
-          ? `${published.by}, ${longDay(published.at)}`
-          : state === 'checked'
+        word="Publish"
+        taken={published}
+        mayTake={can.publish}
+        whyNot={
+          state === 'checked'
             ? 'Anybody will be able to read it, and it will not change.'
-            : undefined}
-      </Step>
+            : undefined
+        }
+        kind="released"
+      />
     </ol>
   );
 }

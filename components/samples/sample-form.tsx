@@ -1,6 +1,6 @@
 'use client';
 
-import { seriesColour } from '@/components/charts/series';
+import { SurveyCheckbox } from '@/components/surveys/survey-checkbox';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
@@ -38,22 +38,11 @@ export function SampleForm({ draft, faults, surveys, groups, onChange }: SampleF
         <legend className="mb-1 text-ink2 text-note">Listed by at least one of (none: any)</legend>
         <div className="grid gap-x-4 sm:grid-cols-2">
           {surveys.map((survey) => (
-            <CheckboxField
+            <SurveyCheckbox
               key={survey.id}
-              checked={draft.surveyIds.includes(survey.id)}
-              onChange={(event) =>
-                change({ surveyIds: toggled(draft.surveyIds, survey.id, event.target.checked) })
-              }
-              label={
-                <span className="inline-flex items-center gap-2">
-                  <span
-                    aria-hidden="true"
-                    className="size-[11px]"
-                    style={{ backgroundColor: seriesColour(survey.position) }}
-                  />
-                  {survey.name}
-                </span>
-              }
+              survey={survey}
+              chosen={draft.surveyIds}
+              onChange={(surveyIds) => change({ surveyIds })}
             />
           ))}
         </div>

@@ -5,18 +5,17 @@ import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createSample, useSamplePreview, useSamples } from '@/components/hooks/use-samples';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
-import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
-import { TextField } from '@/components/ui/text-field';
 import type { SampleView } from '@/lib/schemas/samples';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import { SampleCounts } from './sample-counts';
 import { draftOf, EMPTY_DRAFT, readDraft, type SampleDraft } from './sample-draft';
 import { SampleForm } from './sample-form';
 import { SampleTable } from './sample-table';
+import { SaveVersion, useVersionSave } from './save-version';
 
 const loadSchema = async () => (await import('@/lib/schemas/samples')).sampleDefinitionSchema;
 
@@ -30,38 +29,25 @@ interface SamplesScreenProps {
 export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreenProps) {
   const { data: samples = initial, mutate } = useSamples(collaboration, initial);
   const [draft, setDraft] = useState<SampleDraft>(EMPTY_DRAFT);
-  const [open, setOpen] = useState<SampleView>();
-  const [name, setName] = useState('');
-  const [busy, setBusy] = useState<'new' | 'version'>();
-  const [problem, setProblem] = useState<string>();
   const schema = useSchema(loadSchema);
   const read = schema && readDraft(draft, schema);
   const definition = read?.definition;
   const asked = useDeferredValue(definition);
   const { data: preview, error, isLoading } = useSamplePreview(collaboration, asked);
 
+  const saving = useVersionSave<SampleView>(async ({ name, versionOf }) => {
+    if (!definition) throw new Error('what is saved was not checked');
+    const saved = await createSample(collaboration, { name, definition, versionOf });
+    await mutate();
+    return saved;
+  });
+  const { open } = saving;
   const show = (sample: SampleView | undefined) => {
-    setOpen(sample);
+    saving.show(sample);
     setDraft(sample ? draftOf(sample.definition) : EMPTY_DRAFT);
-    setName(sample?.name ?? '');
-    setProblem(undefined);
-  };
-  const save = async (versionOf: number | undefined) => {
-    if (!definition) return;
-    setBusy(versionOf === undefined ? 'new' : 'version');
-    setProblem(undefined);
-    try {
-      const saved = await createSample(collaboration, { name, definition, versionOf });
-      await mutate();
-      setOpen(saved);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(undefined);
-    }
   };
   const fault =
-    name.trim() === ''
+    saving.name.trim() === ''
       ? 'Give it a name first.'
       : read === undefined
         ? CHECKS_COME
@@ -104,37 +90,12 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
             onChange={setDraft}
           />
           <div className="mt-5 grid gap-4">
-            <TextField
-              label="Name"
-              value={name}
-              maxLength={100}
-              onChange={(event) => setName(event.target.value)}
+            <SaveVersion
+              saving={saving}
+              noun="sample"
+              canSaveVersion={open?.can.saveVersion === true}
+              fault={fault}
             />
-            {problem !== undefined && (
-              <Notice tone="bad" title="It was not saved." isAnnounced>
-                {problem}
-              </Notice>
-            )}
-            <div className="flex flex-wrap gap-2">
-              {open?.can.saveVersion && (
-                <Button
-                  variant="primary"
-                  disabledReason={fault}
-                  isBusy={busy === 'version'}
-                  onClick={() => save(open.number)}
-                >
-                  Save version {open.version + 1} of {open.key}
-                </Button>
-              )}
-              <Button
-                variant={open?.can.saveVersion ? 'normal' : 'primary'}
-                disabledReason={fault}
-                isBusy={busy === 'new'}
-                onClick={() => save(undefined)}
-              >
-                Save as a new sample
-              </Button>
-            </div>
           </div>
         </section>
         <div className="grid min-w-0 content-start gap-8">

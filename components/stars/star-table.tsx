@@ -1,10 +1,10 @@
 import Link from 'next/link';
-import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { seriesColour } from '@/components/charts/series';
 import type { DataColumn, Facet } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
 import { SeriesKey } from '@/components/ui/series-key';
 import type { AgeValue, DistanceValue, StarView } from '@/lib/schemas/stars';
+import { probabilityColumn } from './probability-column';
 import { ageWords, conflictWords, distanceWords } from './star-words';
 
 function Source({ words, conflict }: { words: string; conflict: string | null }) {
@@ -130,29 +130,7 @@ const valueColumns: DataColumn<StarView>[] = [
     className: 'max-md:hidden',
     value: ({ epochs }) => epochs,
   },
-  {
-    id: 'seen',
-    head: (
-      <>
-        <span className="max-md:hidden">detection probability</span>
-        <span className="md:hidden">seen</span>
-      </>
-    ),
-    name: 'detection probability',
-    isNumeric: true,
-    value: ({ probability }) => probability,
-    cell: ({ probability }) =>
-      probability === null ? (
-        '–'
-      ) : (
-        <span className="inline-flex items-center gap-2.5">
-          <span className="max-md:hidden">
-            <ProbabilityBar value={probability} />
-          </span>
-          {`${Math.round(100 * probability)}\u2009%`}
-        </span>
-      ),
-  },
+  probabilityColumn(),
 ];
 
 const questions: Record<string, { label: string; keeps(star: StarView): boolean }> = {

@@ -1,9 +1,9 @@
 'use client';
 
 import { useMemo } from 'react';
-import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { seriesColour } from '@/components/charts/series';
 import { Sparkline } from '@/components/charts/sparkline';
+import { probabilityColumn } from '@/components/stars/probability-column';
 import type { DataColumn, Facet } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
 import { StateMark } from '@/components/ui/state-mark';
@@ -147,27 +147,7 @@ const valueColumns: DataColumn<TargetView>[] = [
       );
     },
   },
-  {
-    id: 'seen',
-    head: (
-      <>
-        <span className="max-md:hidden">detection probability</span>
-        <span className="md:hidden">seen</span>
-      </>
-    ),
-    name: 'detection probability',
-    isNumeric: true,
-    value: ({ probability }) => probability,
-    cell: ({ probability }) =>
-      probability === null ? (
-        '–'
-      ) : (
-        <span className="inline-flex items-center gap-2.5">
-          <ProbabilityBar value={probability} width={52} />
-          <span className="min-w-11">{`${Math.round(100 * probability)}\u2009%`}</span>
-        </span>
-      ),
-  },
+  probabilityColumn(),
   {
     id: 'also',
     head: 'also in',

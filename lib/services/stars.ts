@@ -19,6 +19,7 @@ import {
 } from './star-facts';
 import { matchesOf } from './star-overlaps';
 import { currentYardstick, gridOfSettings, summariseMaps } from './survey-depth';
+import { companionView } from './targets';
 
 const foldedNames = (star: StarRow, entries: EntryRow[]) =>
   [star.name, ...entries.flatMap(({ name, otherNames }) => [name, ...otherNames])].map(foldName);
@@ -240,20 +241,8 @@ export async function getStar(actor: Actor, id: string): Promise<StarPage> {
       contrastMag: curve.contrastMag,
     })),
     companions: companions.map((row) => ({
-      id: row.id,
-      target: ownerOf.get(row.targetId)?.name ?? '',
-      targetId: row.targetId,
+      ...companionView(row, ownerOf.get(row.targetId)?.name),
       survey: surveyOf(row.targetId),
-      name: row.name,
-      status: row.status,
-      massMjup: row.massMjup,
-      massErrorLowerMjup: row.massErrorLowerMjup,
-      massErrorUpperMjup: row.massErrorUpperMjup,
-      semiMajorAxisAu: row.semiMajorAxisAu,
-      semiMajorAxisErrorLowerAu: row.semiMajorAxisErrorLowerAu,
-      semiMajorAxisErrorUpperAu: row.semiMajorAxisErrorUpperAu,
-      probability: row.probability,
-      reference: row.reference,
     })),
     analyses,
     combined,

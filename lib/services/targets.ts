@@ -243,6 +243,23 @@ function markWords(
   return words.join('; ');
 }
 
+/** A companion or candidate as the API lists it, beside the name of its target. */
+export const companionView = (row: CompanionRow, target: string | undefined): CompanionView => ({
+  id: row.id,
+  target: target ?? '',
+  targetId: row.targetId,
+  name: row.name,
+  status: row.status,
+  massMjup: row.massMjup,
+  massErrorLowerMjup: row.massErrorLowerMjup,
+  massErrorUpperMjup: row.massErrorUpperMjup,
+  semiMajorAxisAu: row.semiMajorAxisAu,
+  semiMajorAxisErrorLowerAu: row.semiMajorAxisErrorLowerAu,
+  semiMajorAxisErrorUpperAu: row.semiMajorAxisErrorUpperAu,
+  probability: row.probability,
+  reference: row.reference,
+});
+
 /** Companions and candidates of a survey's targets. */
 export async function listCompanions(actor: Actor, slug: string): Promise<CompanionView[]> {
   const survey = await findSurvey(actor, slug);
@@ -259,19 +276,5 @@ export async function listCompanions(actor: Actor, slug: string): Promise<Compan
       ['name', 'ASC'],
     ],
   });
-  return rows.map((row) => ({
-    id: row.id,
-    target: names.get(row.targetId) ?? '',
-    targetId: row.targetId,
-    name: row.name,
-    status: row.status,
-    massMjup: row.massMjup,
-    massErrorLowerMjup: row.massErrorLowerMjup,
-    massErrorUpperMjup: row.massErrorUpperMjup,
-    semiMajorAxisAu: row.semiMajorAxisAu,
-    semiMajorAxisErrorLowerAu: row.semiMajorAxisErrorLowerAu,
-    semiMajorAxisErrorUpperAu: row.semiMajorAxisErrorUpperAu,
-    probability: row.probability,
-    reference: row.reference,
-  }));
+  return rows.map((row) => companionView(row, names.get(row.targetId)));
 }

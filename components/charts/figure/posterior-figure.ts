@@ -4,7 +4,7 @@ import { densityTop } from '../posterior-layout';
 import { limitWithLevel, type OtherPosterior } from '../posterior-words';
 import type { RateCurve } from '../rate-curve';
 import { textWidth } from '../text-width';
-import { linearTicks, withUnit } from '../ticks';
+import { linearTicks, withRateUnit } from '../ticks';
 import { type Scene, type Shape, sceneToSvg } from './scene';
 
 export interface PosteriorFigureInputs {
@@ -195,8 +195,7 @@ function drawAxis(
     y2: frame.bottom,
     stroke,
   });
-  const unit = quantity === 'host_fraction' ? '\u2009%' : '';
-  const ticks = withUnit(linearTicks(0, 100 * max, frame.right - frame.left, 40), unit);
+  const ticks = withRateUnit(linearTicks(0, 100 * max, frame.right - frame.left, 40), quantity);
   for (const tick of ticks) {
     const at = x(tick.value / 100);
     shapes.push({

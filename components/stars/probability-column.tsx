@@ -1,0 +1,29 @@
+import { ProbabilityBar } from '@/components/charts/probability-bar';
+import type { DataColumn } from '@/components/ui/data-table/column';
+
+/** The detection probability of each row, as a bar and in percent; a dash where there is no map. */
+export function probabilityColumn<Row extends { probability: number | null }>(): DataColumn<Row> {
+  return {
+    id: 'seen',
+    head: (
+      <>
+        <span className="max-md:hidden">detection probability</span>
+        <span className="md:hidden">seen</span>
+      </>
+    ),
+    name: 'detection probability',
+    isNumeric: true,
+    value: ({ probability }) => probability,
+    cell: ({ probability }) =>
+      probability === null ? (
+        '–'
+      ) : (
+        <span className="inline-flex items-center gap-2.5">
+          <span className="max-md:hidden">
+            <ProbabilityBar value={probability} />
+          </span>
+          <span className="min-w-11">{`${Math.round(100 * probability)}\u2009%`}</span>
+        </span>
+      ),
+  };
+}
