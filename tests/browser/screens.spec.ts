@@ -83,7 +83,9 @@ for (const address of outside) {
 }
 
 test.describe('of a collaboration', () => {
-  // One window for all pages: what they share is fetched and compiled once, as for a person.
+  // Half the pages in each of the two processes, whichever is free.
+  test.describe.configure({ mode: 'parallel' });
+  // One window for all of them: what they share is fetched and compiled once, as for a person.
   let page: Page;
 
   test.beforeAll(async ({ browser, baseURL }) => {
