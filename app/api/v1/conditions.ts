@@ -1,7 +1,6 @@
 import type { Actor } from '@/lib/access/actor';
 import { InputError, LabError } from '@/lib/errors';
 import { answerOnce, fingerprintOf, readIdempotencyKey } from '@/lib/services/idempotency';
-import { database, inOneTransaction } from '@/models';
 import { etagOf, namesTag, WrittenJson } from './answer';
 
 /**
@@ -23,28 +22,6 @@ export async function requireUnchanged(
       ? 'It has changed since it was read: read it again, then decide'
       : 'This address carries no ETag: leave If-Match out',
   );
-}
-
-/**
- * The work after everybody else's on the same thing, in one transaction with whatever it reads
- * first: what was compared is what is changed.
- *
- * @param params parts of the address; writes whose parts are the same wait for each other
- */
-export function oneAfterAnother<T>(
-  { collaborationId }: Actor,
-  params: Record<string, string>,
-  work: () => Promise<T>,
-): Promise<T> {
-  const { collaboration: _, ...parts } = params;
-  const thing = JSON.stringify([collaborationId, parts]);
-  return inOneTransaction(async (transaction) => {
-    await database().query('select pg_advisory_xact_lock(hashtextextended($1, 0))', {
-      bind: [thing],
-      transaction,
-    });
-    return work();
-  });
 }
 
 /** Where an answer cannot be kept, a key must not be taken as if it were. */

@@ -4,8 +4,9 @@ import { addressOf, countAttempt, type LimitName } from '@/lib/access/attempts';
 import { knownPerson, requireSameOrigin } from '@/lib/access/requests';
 import { AccessError, LabError, NotSignedIn } from '@/lib/errors';
 import { parseInput, parseQuery } from '@/lib/schemas/input';
+import { oneAfterAnother } from '@/lib/services/one-after-another';
 import { answer, type Seen } from './answer';
-import { answerKept, oneAfterAnother, refuseKey, requireUnchanged } from './conditions';
+import { answerKept, refuseKey, requireUnchanged } from './conditions';
 import { fromCursor, nextLink } from './paging';
 import { readJson, requireJsonType } from './read-body';
 
