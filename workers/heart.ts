@@ -11,7 +11,11 @@ export interface Heart {
 }
 
 /** Beats for the workers of this process, and frees what dead workers held. */
-export async function startHeart(workerIds: () => string[], processId: string): Promise<Heart> {
+export async function startHeart(
+  workerIds: () => string[],
+  processId: string,
+  facts: { threads: number; engineVersion: string },
+): Promise<Heart> {
   let lastBeat = Number.NEGATIVE_INFINITY;
   let timer: NodeJS.Timeout | undefined;
   let isStopped = false;
@@ -21,7 +25,7 @@ export async function startHeart(workerIds: () => string[], processId: string): 
     try {
       // A process that slept past its lease must not bury itself: beat first, then look.
       if (performance.now() - lastBeat > HEARTBEAT_MS - WATCH_MS / 2) {
-        await beat(workerIds(), processId);
+        await beat(workerIds(), processId, facts);
         lastBeat = performance.now();
       }
       const dead = await buryDeadWorkers();

@@ -4,6 +4,7 @@ import path from 'node:path';
 import { Logger, run, type TaskList, type WorkerEvents } from 'graphile-worker';
 import { config } from '@/lib/config';
 import { deliverySchema, type JobKind } from '@/lib/queue/kinds';
+import { ENGINE_VERSION } from '@/lib/sensitivity';
 import { closeDatabase } from '@/models';
 import { startDepartures } from './departures';
 import { startHeart } from './heart';
@@ -66,7 +67,10 @@ async function main(): Promise<void> {
       if (level === 'error' || level === 'warning') log(level, 'queue', { message });
     }),
   });
-  const heart = await startHeart(() => [...workerIds], `${os.hostname()}:${process.pid}`);
+  const heart = await startHeart(() => [...workerIds], `${os.hostname()}:${process.pid}`, {
+    threads: pool.threads,
+    engineVersion: ENGINE_VERSION,
+  });
   const post = startPost();
   const departures = startDepartures();
   log('info', 'worker ready', { threads: pool.threads, process: process.pid });

@@ -58,6 +58,7 @@ import {
   targetSchema,
 } from '@/lib/schemas/surveys';
 import { dependentsSchema, uploadSchema } from '@/lib/schemas/uploads';
+import { workSchema } from '@/lib/schemas/work';
 
 export {
   activityPageSchema,
@@ -124,6 +125,7 @@ export {
   tokenSchema,
   uploadSchema,
   valueTablesSchema,
+  workSchema,
 };
 
 export const analysisAnswerSchema = z.object({ analysis: z.string() });

@@ -4,6 +4,7 @@ import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { changeSettings } from '@/components/hooks/use-settings';
+import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -57,6 +58,11 @@ export function SettingsScreen(props: SettingsScreenProps) {
       <PageTitle
         title="Settings"
         context={can.manage ? 'For everybody in the collaboration' : 'An owner can change them'}
+        actions={
+          can.manage && (
+            <LinkButton href={`/${settings.slug}/settings/work`}>Queue and workers</LinkButton>
+          )
+        }
       />
       <div className="grid gap-3 empty:hidden [&:not(:empty)]:mb-5">
         {archivedAt !== null && (

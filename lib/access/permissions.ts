@@ -170,6 +170,11 @@ export const permissions = {
     ['no', 'no', 'no', 'no', 'yes'],
     'Ask an owner',
   ),
+  'watch-work': row(
+    'watch the queue and the workers',
+    ['no', 'no', 'no', 'no', 'yes'],
+    'Ask an owner',
+  ),
   'read-audit': row('read the log', ['no', 'no', 'no', 'no', 'yes'], 'Ask an owner'),
   'manage-collaboration': row(
     'rename, archive and delete the collaboration',
@@ -204,6 +209,7 @@ function covers(answer: Answer, item: Standing): boolean {
 const OF_AN_ARCHIVE: ReadonlySet<Action> = new Set([
   'read',
   'read-audit',
+  'watch-work',
   'change-roles',
   'create-token',
   'withdraw-release',

@@ -7,12 +7,16 @@ import { LEASE_S, MAX_ATTEMPTS } from './lease';
 import { select } from './statement';
 
 /** Shows that these workers live. */
-export async function beat(workerIds: string[], processId: string): Promise<void> {
+export async function beat(
+  workerIds: string[],
+  processId: string,
+  { threads, engineVersion }: { threads?: number; engineVersion?: string } = {},
+): Promise<void> {
   await select(
-    `insert into worker_heartbeat (worker_id, process_id, seen_at)
-       select unnest($1::text[]), $2, clock_timestamp()
+    `insert into worker_heartbeat (worker_id, process_id, seen_at, threads, engine_version)
+       select unnest($1::text[]), $2, clock_timestamp(), $3::integer, $4::text
      on conflict (worker_id) do update set seen_at = excluded.seen_at returning worker_id`,
-    [workerIds, processId],
+    [workerIds, processId, threads ?? null, engineVersion ?? null],
   );
 }
 

@@ -10,6 +10,7 @@ import {
 } from './mail';
 import { changeNoteSchema, noteItemSchema, noteListSchema, writeNoteSchema } from './notes';
 import { changeSettingsSchema, settingsSchema } from './settings';
+import { workSchema } from './work';
 
 /** Notes, news, settings and mail. */
 export const talkRoutes: ApiRoute[] = [
@@ -46,6 +47,9 @@ export const talkRoutes: ApiRoute[] = [
   route('patch', `${team}/settings`, 'write', 'Change settings; archive it or open it again', {
     body: changeSettingsSchema,
     answer: settingsSchema,
+  }),
+  route('get', `${team}/work`, 'read', 'What waits, runs and failed, and the workers', {
+    answer: workSchema,
   }),
   route('get', `${team}/mail`, 'read', 'Messages that could not be delivered', {
     answer: failedMessagesSchema,

@@ -37,6 +37,8 @@ const inside = [
   `${LAB}/maps`,
   `${LAB}/populations/new`,
   `${LAB}/people`,
+  `${LAB}/settings`,
+  `${LAB}/settings/work`,
   `${LAB}/me/tokens`,
 ];
 

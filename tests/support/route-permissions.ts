@@ -299,6 +299,7 @@ export const routePermissions: Record<string, RoutePermission> = {
   'get /activity': read({ query: ({ survey }) => ({ item: survey }) }),
   'get /settings': read(),
   'patch /settings': manage({ body: ({ analysis }) => ({ leadAnalysis: analysis }) }),
+  'get /work': as('watch-work')(),
   'get /mail': as('read-audit')(),
   'post /mail/{message}/retry': as('read-audit')(),
 };
