@@ -14,6 +14,22 @@ const time = new Intl.DateTimeFormat('en-GB', {
   timeZone: 'UTC',
 });
 
+const changes = {
+  password: {
+    subject: 'Your password was changed',
+    sentence: 'The password of your account was changed, and every other session ended,',
+  },
+  'second-factor-on': {
+    subject: 'Signing in now asks for a code',
+    sentence: 'A second factor was turned on for your account',
+  },
+  'second-factor-off': {
+    subject: 'Signing in no longer asks for a code',
+    sentence: 'The second factor of your account was turned off',
+  },
+} as const;
+type Change = keyof typeof changes;
+
 interface MailKind<Data> {
   schema: ZodType<Data>;
   /** The switch that stops it; null for what cannot be stopped. */
@@ -182,6 +198,20 @@ export const mailKinds = {
       link: { label: 'Set a new password', path: to },
       notes: [`The link works once, until ${time.format(expiresAt)} (UTC).`],
       why: 'You get this message because your address was typed on the page of sign-in. If that was not you, do nothing: your password stays as it is.',
+    }),
+  }),
+  /** A way into the account was changed: whoever did not do it must hear of it. */
+  'account-changed': kind({
+    schema: z.object({
+      what: z.enum(Object.keys(changes) as [Change, ...Change[]]),
+      at: z.coerce.date(),
+    }),
+    preference: null,
+    compose: ({ what, at }) => ({
+      subject: `${changes[what].subject} on Rarebound`,
+      sentence: `${changes[what].sentence} on ${time.format(at)} (UTC). If that was you, there is nothing to do.`,
+      link: { label: 'It was not me: set a new password', path: '/reset' },
+      why: 'You get this message because it concerns how one signs in to your account.',
     }),
   }),
   'sign-in-link': kind({

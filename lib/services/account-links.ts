@@ -9,6 +9,7 @@ import { queueMessage, withdrawMessages } from '@/lib/mail/outbox';
 import { isMailSetUp } from '@/lib/mail/transport';
 import type { AskLink, LinkPurpose, ResetPassword } from '@/lib/schemas/account-access';
 import { database, inTransaction, PersonRow } from '@/models';
+import { tellOfChange } from './account-notice';
 import { recordAudit } from './audit';
 
 /** Longer than the work takes: the time of the answer does not tell which accounts exist. */
@@ -85,6 +86,7 @@ export async function resetPassword(input: ResetPassword, address: string): Prom
     const item = { kind: 'person', id: person.id };
     const summary = 'set a new password by a link';
     await recordAudit(actor, 'reset-password', item, summary, transaction);
+    await tellOfChange(person.id, 'password', transaction);
     return person.email;
   });
   const account = attemptKey(email);

@@ -8,6 +8,7 @@ import { Conflict, InputError } from '@/lib/errors';
 import type { ChangePassword } from '@/lib/schemas/account';
 import { type Me, meSchema, type SignUp } from '@/lib/schemas/people';
 import { database, inTransaction, PersonRow } from '@/models';
+import { tellOfChange } from './account-notice';
 import { recordAudit } from './audit';
 
 /** Makes a person within the caller's transaction; the password's rules are checked here. */
@@ -87,5 +88,6 @@ export async function changePassword(person: KnownPerson, input: ChangePassword)
     await dropLinks(row.id, transaction);
     const item = { kind: 'person', id: row.id };
     await recordAudit(person, 'change-password', item, 'changed their password', transaction);
+    await tellOfChange(row.id, 'password', transaction);
   });
 }

@@ -21,6 +21,7 @@ import {
 } from '@/lib/schemas/account-access';
 import { CODE_IS_ASKED } from '@/lib/schemas/sign-in-words';
 import { inTransaction, PersonRow } from '@/models';
+import { tellOfChange } from './account-notice';
 import { recordAudit } from './audit';
 
 const IS_ON = 'A code is asked for already when you sign in: turn that off first';
@@ -101,6 +102,7 @@ export async function confirmSecondFactor(
     const recoveryCodes = await renewRecoveryCodes(personId, transaction);
     await endSessions(personId, transaction, person.sessionId ?? null);
     await record(person, 'set-second-factor', 'set a second factor up', transaction);
+    await tellOfChange(personId, 'second-factor-on', transaction);
     return { recoveryCodes };
   });
   if (done === null) throw wrongCode();
@@ -136,6 +138,7 @@ export async function removeSecondFactor(
     await dropFactor(person.personId, transaction);
     await endSessions(person.personId, transaction, person.sessionId ?? null);
     await record(person, 'remove-second-factor', 'turned the second factor off', transaction);
+    await tellOfChange(person.personId, 'second-factor-off', transaction);
     return true;
   });
   if (done === null) throw wrongCode();

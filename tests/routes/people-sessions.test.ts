@@ -155,6 +155,10 @@ describe('POST /api/v1/me/password', () => {
     expect((await new Browser().signIn(email, PASSWORD)).status).toBe(401);
     const again = await new Browser().signIn(email, 'walnut zephyr bishop copper');
     expect(again.status).toBe(200);
+    const told = await query('select kind, state from outbox_message where to_address = $1', [
+      email,
+    ]);
+    expect(told).toEqual([{ kind: 'account-changed', state: 'waiting' }]);
   });
 
   it('asks for the present password, and holds the new one to the rules', async () => {

@@ -40,6 +40,7 @@ const samples = {
   'guest-link-ending': { ...item, endsAt: new Date('2027-05-04T10:00:00Z') },
   departure: { ...item, what: 'asked' as const, dueAt: new Date('2027-05-04T10:00:00Z') },
   'password-reset': { path: '/reset/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
+  'account-changed': { what: 'password' as const, at: new Date('2027-05-04T10:00:00Z') },
   'sign-in-link': { path: '/sign-in/x', expiresAt: new Date('2027-05-04T10:00:00Z') },
 };
 
