@@ -4,8 +4,9 @@ import { demand } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { idSchema } from '@/lib/schemas/common';
 import type { ColumnMapping } from '@/lib/schemas/uploads';
-import { ColumnMemoryRow, PersonRow, type SurveyRow } from '@/models';
+import { ColumnMemoryRow, inTransaction, PersonRow, type SurveyRow } from '@/models';
 import { canonicalJson, sha256Hex } from '@/models/digest';
+import { recordAudit } from './audit';
 import { refuseShared } from './sharing/shared-surveys';
 import { findSurvey, isLead } from './surveys';
 
@@ -81,6 +82,12 @@ export async function forgetMapping(actor: Actor, slug: string, id: string): Pro
   demand(actor, 'import', { isLead: isLead(actor, survey) });
   await refuseShared(survey);
   const isId = idSchema.safeParse(id).success;
-  const gone = isId ? await ColumnMemoryRow.destroy({ where: { id, surveyId: survey.id } }) : 0;
-  if (gone === 0) throw new NotFound('column mapping');
+  await inTransaction(async (transaction) => {
+    const where = { id, surveyId: survey.id };
+    const gone = isId ? await ColumnMemoryRow.destroy({ where, transaction }) : 0;
+    if (gone === 0) throw new NotFound('column mapping');
+    const item = { kind: 'survey', id: survey.id };
+    const summary = `let a way to read columns of ${survey.name} be forgotten`;
+    await recordAudit(actor, 'forget-columns', item, summary, transaction);
+  });
 }

@@ -1,6 +1,9 @@
+import { cpSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
 import { Sequelize } from 'sequelize';
 import { afterAll, beforeAll, expect, it } from 'vitest';
-import { migrations } from '@/lib/local/migrate';
+import { migrate, migrations } from '@/lib/local/migrate';
 import { withDatabase } from '../support/database';
 
 const { url, query } = withDatabase();
@@ -34,6 +37,41 @@ it('all migrations go down to nothing and up to the same schema again', async ()
   expect(left).toEqual([]);
   await migrations(sequelize).up();
   expect(await describeSchema()).toEqual(before);
+});
+
+it('a migration that fails half-way leaves the schema as it was, and the next try begins anew', async () => {
+  const folder = mkdtempSync(path.join(tmpdir(), 'migrations-'));
+  try {
+    cpSync('migrations', folder, { recursive: true });
+    const write = (name: string, rest: string) =>
+      writeFileSync(
+        path.join(folder, name),
+        `exports.up = ({ context }) => context.sequelize.query(\`
+           create table half_way (id integer); alter table survey add column half text; ${rest}\`);
+         exports.down = ({ context }) => context.sequelize.query(
+           'drop table half_way; alter table survey drop column half');`,
+      );
+    const before = await describeSchema();
+    write('99990101000000-half-way.js', 'select 1 / 0;');
+    await expect(migrate(url, folder)).rejects.toThrow('division by zero');
+    expect(await describeSchema()).toEqual(before);
+    // A file of another name, since the first one stays loaded.
+    rmSync(path.join(folder, '99990101000000-half-way.js'));
+    write('99990101000001-mended.js', '');
+    expect(await migrate(url, folder)).toEqual(['99990101000001-mended.js']);
+    await migrations(sequelize, folder).down();
+    expect(await describeSchema()).toEqual(before);
+  } finally {
+    rmSync(folder, { recursive: true });
+  }
+});
+
+it('each migration is one statement to the database, which takes it whole or not at all', () => {
+  const files = readdirSync('migrations').filter((name) => name.endsWith('.js'));
+  for (const name of files) {
+    const calls = readFileSync(path.join('migrations', name), 'utf8').match(/\.query\(/g);
+    expect(calls, name).toHaveLength(1);
+  }
 });
 
 it('each migration alone goes down and up again', async () => {

@@ -11,6 +11,8 @@ withDatabase();
 
 let ours: WholeLab;
 let theirs: WholeLab;
+/** With the names and numbers of ours. */
+let twin: WholeLab;
 let owner: Record<string, string>;
 /** Ids of the same form that nothing has. */
 let absent: LabIds;
@@ -24,6 +26,7 @@ const absentLike = (name: string, id: string) => {
 
 beforeAll(async () => {
   [ours, theirs] = [await buildWholeLab(11), await buildWholeLab(21)];
+  twin = await buildWholeLab(11);
   owner = bearer(await tokenOf(ours.people.owner, ours.collaboration));
   // Releases count by collaboration: with two of them, the second is there for one only.
   await database().query('update release set number = 77 where id = $1', {
@@ -85,6 +88,27 @@ describe('an id of another collaboration in the address', () => {
       const foreign = await told(route, with_(theirs.ids[last]));
       expect(foreign).toEqual(await told(route, with_(absent[last])));
       expect(foreign.status).toBe(404);
+    },
+  );
+});
+
+/** The same names, numbers and addresses in both; only the ids differ. */
+describe('what is listed, counted, searched and exported', () => {
+  const reading = sessionless.filter(({ route }) => route.method === 'get');
+
+  it.each(byName(reading))(
+    'holds nothing of a collaboration with equal names: %s',
+    async (_, route) => {
+      const { collaboration, people, ids } = twin;
+      const given = { slug: ours.collaboration.slug, headers: owner, ids: ours.ids };
+      const text = await (await askLab(route, given)).text();
+      const theirIds = [
+        collaboration.id,
+        collaboration.slug,
+        ...Object.values(people).flatMap(({ id, email }) => [id, email]),
+        ...Object.values(ids).filter((id) => id.length === 36),
+      ];
+      for (const id of theirIds) expect(text.includes(id), id).toBe(false);
     },
   );
 });

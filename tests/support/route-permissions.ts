@@ -69,7 +69,7 @@ export const routePermissions: Record<string, RoutePermission> = {
   'patch ': manage({ body: () => ({ name: 'Another name' }) }),
   'get /members': read(),
   'patch /members/{member}': changeRoles({ body: () => ({ roles: ['student'] }) }),
-  'post /members/{member}/suspension': changeRoles({ body: () => ({ isSuspended: false }) }),
+  'post /members/{member}/suspension': changeRoles({ body: () => ({ isSuspended: true }) }),
   'delete /members/{member}': changeRoles(),
   'get /invitations': invite(),
   'post /invitations': invite({

@@ -4,7 +4,7 @@ import { type Budget, limits } from '@/lib/access/attempts';
 import { withinRequest } from '@/lib/access/request-id';
 import { config } from '@/lib/config';
 import { observeRequest } from '@/lib/services/metrics';
-import { logRequest, problemOf } from './problem';
+import { isDatabaseAway, logRequest, problemOf } from './problem';
 
 /** What becomes known of a request while it is worked on. */
 export interface Seen {
@@ -99,6 +99,17 @@ function shape(request: Request, result: unknown, status: number): Response {
   return Response.json(result, { status });
 }
 
+/** What was only read may be asked once more where the connection was lost. */
+async function againIfLost(request: Request, seen: Seen, work: (seen: Seen) => Promise<unknown>) {
+  try {
+    return await work(seen);
+  } catch (error) {
+    const isRead = request.method === 'GET' || request.method === 'HEAD';
+    if (!isRead || !isDatabaseAway(error)) throw error;
+    return work(seen);
+  }
+}
+
 /** Runs one request: whatever happens ends in an answer, a log line and nothing of the inside. */
 export async function answer(
   request: Request,
@@ -111,7 +122,7 @@ export async function answer(
   let response: Response;
   let fault: unknown;
   try {
-    const result = await withinRequest(requestId, () => work(seen));
+    const result = await withinRequest(requestId, () => againIfLost(request, seen, work));
     response = finish(shape(request, result, status), requestId, seen);
   } catch (error) {
     fault = error;

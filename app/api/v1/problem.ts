@@ -21,6 +21,19 @@ const TITLES: Record<number, string> = {
 
 const UNAVAILABLE = /^Sequelize(Connection|HostNotFound|HostNotReachable|ConnectionAcquire)/;
 const RETRY_AFTER_S = 5;
+/** Ended by the server, or by the network, while a statement was on its way. */
+const LOST =
+  /^(57P0[123]|08\d{3}|ECONNRESET|ECONNREFUSED|EPIPE)$|Connection terminated|connection error|Client was closed/;
+
+/** Whether the database was not there, or went away in between. */
+export function isDatabaseAway(error: unknown): boolean {
+  if (!(error instanceof Error)) return false;
+  if (UNAVAILABLE.test(error.name)) return true;
+  const { original } = error as { original?: unknown };
+  if (original instanceof Error) return isDatabaseAway(original);
+  const { code } = error as { code?: unknown };
+  return LOST.test(typeof code === 'string' ? code : '') || LOST.test(error.message);
+}
 
 /** Faults of the database that a person can act on; everything else stays an unknown fault. */
 function known(error: unknown): unknown {
@@ -30,6 +43,10 @@ function known(error: unknown): unknown {
   }
   if (UNAVAILABLE.test(name)) {
     return new LabError('unavailable', 503, 'The database does not answer; nothing was stored');
+  }
+  if (!(error instanceof LabError) && isDatabaseAway(error)) {
+    const words = 'The connection to the database was lost: read again whether the change is there';
+    return new LabError('unavailable', 503, words);
   }
   return error;
 }

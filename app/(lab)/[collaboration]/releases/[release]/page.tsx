@@ -2,8 +2,8 @@ import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
 import { ReleaseScreen } from '@/components/releases/release-screen';
 import { getDeposit } from '@/lib/services/deposits/deposits';
-import { listGuestLinks } from '@/lib/services/releases/guest-links';
 import { addressOfRelease } from '@/lib/services/releases/address';
+import { listGuestLinks } from '@/lib/services/releases/guest-links';
 import { foundRelease } from '../found-release';
 
 interface PageProps {
