@@ -20,7 +20,9 @@ export function FailedTable({ collaboration, failed, onRetry }: FailedTableProps
       <TableHead>
         <Row>
           <HeadCell>what</HeadCell>
-          <HeadCell isNumeric>attempts</HeadCell>
+          <HeadCell isNumeric className="max-md:hidden">
+            attempts
+          </HeadCell>
           <HeadCell>ended</HeadCell>
           <HeadCell>
             <span className="sr-only">again</span>
@@ -36,8 +38,10 @@ export function FailedTable({ collaboration, failed, onRetry }: FailedTableProps
                 {job.fault}
               </span>
             </Cell>
-            <Cell isNumeric>{job.attempts}</Cell>
-            <Cell className="whitespace-nowrap">
+            <Cell isNumeric className="max-md:hidden">
+              {job.attempts}
+            </Cell>
+            <Cell className="md:whitespace-nowrap">
               {job.finishedAt === null ? '–' : moment(job.finishedAt)}
             </Cell>
             <Cell>

@@ -14,7 +14,7 @@ export function QueueTable({ queue }: Pick<WorkView, 'queue'>) {
           <HeadCell>kind</HeadCell>
           <HeadCell isNumeric>running</HeadCell>
           <HeadCell isNumeric>waiting</HeadCell>
-          <HeadCell>longest since</HeadCell>
+          <HeadCell>oldest since</HeadCell>
         </Row>
       </TableHead>
       <TableBody>

@@ -21,7 +21,7 @@ export function RunningTable({ collaboration, running, maxAttempts }: RunningTab
           <HeadCell isNumeric>done</HeadCell>
           <HeadCell isNumeric>attempt</HeadCell>
           <HeadCell isNumeric>lease left</HeadCell>
-          <HeadCell>since</HeadCell>
+          <HeadCell className="max-md:hidden">since</HeadCell>
         </Row>
       </TableHead>
       <TableBody>
@@ -36,7 +36,7 @@ export function RunningTable({ collaboration, running, maxAttempts }: RunningTab
               {job.attempts} of {maxAttempts}
             </Cell>
             <Cell isNumeric>{leaseLeftS === 0 ? 'run out' : formatDuration(leaseLeftS)}</Cell>
-            <Cell className="whitespace-nowrap">
+            <Cell className="whitespace-nowrap max-md:hidden">
               {job.startedAt === null ? '–' : moment(job.startedAt)}
             </Cell>
           </Row>
