@@ -1,7 +1,6 @@
-import { weighContracted } from '@/components/runs/contracted';
 import { orNull } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
-import { answerFromView } from '@/lib/inference';
+import { answerFromView, completenessWhileMoving } from '@/lib/inference';
 import { marginalWeights, rateScales, toLogIndex } from '@/lib/population';
 import { definitionOf, type LawDefinition, partsOf } from './law-parts';
 import type { Asked } from './preview-figures';
@@ -70,7 +69,7 @@ export function limitPlane(
         return own;
       });
       axisWeights.forEach((weights, column) => {
-        const completenessPerStar = weighContracted(contracted, weights);
+        const completenessPerStar = completenessWhileMoving(contracted, weights);
         const view = {
           population: at(alpha, semiMajorAxisIndex[column]),
           completenessPerStar,
@@ -104,5 +103,5 @@ function contractMass(sample: LiveSample, weightsOf: (star: number) => Float64Ar
       }
     }
   }
-  return contracted;
+  return { moving: 'semiMajorAxis' as const, stars: sample.stars.length, values: contracted };
 }

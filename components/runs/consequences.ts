@@ -1,18 +1,24 @@
 import { type PriorLaw, priorLaws, priorOfLaw } from '@/components/analyses/prior-choice';
 import {
   answerFromView,
+  contractStillAxis,
   type Likelihood,
   type PopulationView,
   upperLimit,
   viewPopulation,
 } from '@/lib/inference';
-import { fromLogIndex, populationWeights, toLogIndex } from '@/lib/population';
+import {
+  fromLogIndex,
+  type MovingAxis,
+  populationWeights,
+  toLogIndex,
+  weightsWhileMoving,
+} from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { contract, type MovingAxis } from './contracted';
 import { askedOf, orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
 import { type LiveSetting, withLikelihood } from './live-setting';
-import { viewContracted } from './live-views';
+import { otherAxis, viewContracted } from './live-views';
 import { TRACK, trackOf } from './tracks';
 
 /** The limit as a function of one control, all others standing still. */
@@ -41,13 +47,13 @@ export function traceIndex(
   const asked = askedOf(sample, setting);
   const still = orNull(() => populationWeights(sample.grid, definition));
   if (still === null) return { values: logIndices, limits: logIndices.map(() => Number.NaN) };
-  const contracted = contract(sample, still, moving);
+  const { maps, grid } = sample;
+  const contracted = contractStillAxis(maps, grid, moving, still[otherAxis[moving]]);
   const limits = logIndices.map((index) => {
     const population = { ...definition, [fieldOf[moving]]: index };
     const limit = orNull(() => {
-      const weights = populationWeights(sample.grid, population);
-      const view = viewContracted(contracted, weights, { moving, definition: population });
-      return answerFromView(view, asked).limit;
+      const weights = weightsWhileMoving(grid, population, moving, still);
+      return answerFromView(viewContracted(contracted, weights, population), asked).limit;
     });
     return limit ?? Number.NaN;
   });

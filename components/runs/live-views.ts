@@ -1,7 +1,17 @@
-import { type PopulationView, viewPopulation } from '@/lib/inference';
-import { type PopulationWeights, populationWeights } from '@/lib/population';
+import {
+  type ContractedMaps,
+  completenessWhileMoving,
+  contractStillAxis,
+  type PopulationView,
+  viewPopulation,
+} from '@/lib/inference';
+import {
+  type MovingAxis,
+  type PopulationWeights,
+  populationWeights,
+  weightsWhileMoving,
+} from '@/lib/population';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import { contract, type MovingAxis, weighContracted } from './contracted';
 import type { LiveSample } from './live-sample';
 
 const fieldsAlong = {
@@ -9,10 +19,18 @@ const fieldsAlong = {
   semiMajorAxis: ['semiMajorAxisMinAu', 'semiMajorAxisMaxAu', 'semiMajorAxisIndex'],
 } as const satisfies Record<MovingAxis, readonly (keyof PowerLawDefinition)[]>;
 
-const otherAxis = { mass: 'semiMajorAxis', semiMajorAxis: 'mass' } as const;
+export const otherAxis = { mass: 'semiMajorAxis', semiMajorAxis: 'mass' } as const;
 
 const keyAlong = (definition: PowerLawDefinition, axis: MovingAxis) =>
   fieldsAlong[axis].map((field) => definition[field]).join();
+
+/** What the movement of one axis leaves as it is. */
+interface Held {
+  axis: MovingAxis;
+  stillKey: string;
+  weights: PopulationWeights;
+  contracted: ContractedMaps;
+}
 
 /**
  * Views of one sample under populations that change step by step, as under a hand.
@@ -22,7 +40,7 @@ const keyAlong = (definition: PowerLawDefinition, axis: MovingAxis) =>
  */
 export class LiveViews {
   private last: PowerLawDefinition | undefined;
-  private held: { axis: MovingAxis; stillKey: string; contracted: Float64Array } | undefined;
+  private held: Held | undefined;
 
   constructor(private readonly sample: LiveSample) {}
 
@@ -36,11 +54,9 @@ export class LiveViews {
     if (moving === undefined) {
       return viewPopulation(this.sample.maps, this.sample.grid, definition);
     }
-    const weights = populationWeights(this.sample.grid, definition);
-    return viewContracted(this.contracted(definition, weights, moving), weights, {
-      moving,
-      definition,
-    });
+    const { weights, contracted } = this.hold(definition, moving);
+    const moved = weightsWhileMoving(this.sample.grid, definition, moving, weights);
+    return viewContracted(contracted, moved, definition);
   }
 
   /** The axis that alone differs from the population before; undefined at first and otherwise. */
@@ -53,33 +69,35 @@ export class LiveViews {
     return isStill('mass') ? 'semiMajorAxis' : undefined;
   }
 
-  private contracted(
-    definition: PowerLawDefinition,
-    weights: PopulationWeights,
-    axis: MovingAxis,
-  ): Float64Array {
-    const stillKey = keyAlong(definition, otherAxis[axis]);
+  private hold(definition: PowerLawDefinition, axis: MovingAxis): Held {
+    const still = otherAxis[axis];
+    const stillKey = keyAlong(definition, still);
     if (this.held?.axis !== axis || this.held.stillKey !== stillKey) {
-      this.held = { axis, stillKey, contracted: contract(this.sample, weights, axis) };
+      const { maps, grid } = this.sample;
+      const weights = populationWeights(grid, definition);
+      const contracted = contractStillAxis(maps, grid, axis, weights[still]);
+      this.held = { axis, stillKey, weights, contracted };
     }
-    return this.held.contracted;
+    return this.held;
   }
 }
 
 /** A view from maps that are summed over the axis that stands still. */
 export function viewContracted(
-  contracted: Float64Array,
+  contracted: ContractedMaps,
   weights: PopulationWeights,
-  { moving, definition }: { moving: MovingAxis; definition: PowerLawDefinition },
+  definition: PowerLawDefinition,
 ): PopulationView {
-  const completenessPerStar = weighContracted(contracted, weights[moving]);
+  const completenessPerStar = completenessWhileMoving(contracted, weights[contracted.moving]);
+  let exposure = 0;
+  for (const one of completenessPerStar) exposure += one;
   return {
     population: definition,
     completenessPerStar,
     numberSeenPerStar: null,
     rateScale: null,
     hostMassMsun: null,
-    exposure: completenessPerStar.reduce((sum, one) => sum + one, 0),
+    exposure,
     stars: completenessPerStar.length,
     shareOutsideMap: weights.shareOutsideMap,
   };

@@ -59,18 +59,21 @@ function scaledCompleteness(question: RateQuestion): Float64Array {
       `rateScale has one value a star, got ${rateScale.length} for ${completeness.length} stars`,
     );
   }
-  return completeness.map((c, star) => {
+  const scaled = new Float64Array(completeness.length);
+  for (let star = 0; star < scaled.length; star++) {
+    const c = completeness[star];
     if (!(c >= 0) || !Number.isFinite(c) || (isFraction && c > 1)) {
       throw new RangeError(
         `completeness of star ${star} must lie ${isFraction ? 'in 0..1' : 'at 0 or above'}, got ${c}`,
       );
     }
-    const scale = rateScale?.[star] ?? 1;
+    const scale = rateScale === undefined ? 1 : rateScale[star];
     if (!(scale > 0) || !Number.isFinite(scale)) {
       throw new RangeError(`rateScale of star ${star} must be a positive number, got ${scale}`);
     }
-    return scale * c;
-  });
+    scaled[star] = scale * c;
+  }
+  return scaled;
 }
 
 /** The fraction at which the first star's own rate reaches 1; 1 where none does below. */

@@ -1,3 +1,4 @@
+import { type MovingAxis, sumAlong, sumOfIntegers } from '@/lib/population';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { StackedMaps } from './answer';
 
@@ -136,9 +137,6 @@ export function contractStack(
   return means;
 }
 
-/** The axis along which a control moves. */
-export type MovingAxis = 'mass' | 'semiMajorAxis';
-
 /** Maps averaged over the axis that stands still, shape [star, place on the moving axis]. */
 export interface ContractedMaps {
   moving: MovingAxis;
@@ -168,18 +166,25 @@ export function contractStillAxis(
   requireWeights([stillWeights], stillLength, moving === 'mass' ? 'semi-major axis' : 'mass');
   const length = moving === 'mass' ? rows : columns;
   const values = new Float64Array(stars * length);
-  const scale = maps instanceof Uint16Array ? 1 / 65535 : 1;
+  const isStored = maps instanceof Uint16Array;
+  const scale = isStored ? 1 / 65535 : 1;
+  const [first, end] = activeRange([stillWeights]);
+  if (moving === 'mass') {
+    for (let row = 0; row < stars * rows; row++) {
+      const start = row * columns;
+      const sum = isStored
+        ? sumOfIntegers(maps, start, stillWeights, first, end)
+        : sumAlong(maps, start, stillWeights, first, end);
+      values[row] = scale * sum;
+    }
+    return { moving, stars, values };
+  }
   for (let star = 0; star < stars; star++) {
-    for (let i = 0; i < rows; i++) {
+    const at = star * columns;
+    for (let i = first; i < end; i++) {
       const start = (star * rows + i) * columns;
-      if (moving === 'mass') {
-        let sum = 0;
-        for (let j = 0; j < columns; j++) sum += maps[start + j] * stillWeights[j];
-        values[star * rows + i] = sum * scale;
-      } else if (stillWeights[i] !== 0) {
-        const weight = stillWeights[i] * scale;
-        for (let j = 0; j < columns; j++) values[star * columns + j] += weight * maps[start + j];
-      }
+      const weight = stillWeights[i] * scale;
+      for (let j = 0; j < columns; j++) values[at + j] += weight * maps[start + j];
     }
   }
   return { moving, stars, values };
@@ -205,8 +210,7 @@ export function completenessWhileMoving(
   }
   const means = new Float64Array(stars);
   for (let star = 0; star < stars; star++) {
-    let sum = 0;
-    for (let i = 0; i < length; i++) sum += values[star * length + i] * weights[i];
+    const sum = sumAlong(values, star * length, weights, 0, length);
     means[star] = Math.min(1, Math.max(0, sum));
   }
   return means;

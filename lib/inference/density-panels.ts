@@ -47,8 +47,27 @@ const ROUNDING = 16 * Number.EPSILON;
 /** Most panels beside those that the pieces themselves are. */
 const MAX_PANELS = 3000;
 
-function evaluatePanel(stretches: Stretch[], stretch: number, start: number, width: number): Panel {
-  const values = new Float64Array(NODES);
+const PANELS_AT_ONCE = 48;
+
+/** Hands out rows of zeros from large arrays: small ones of their own cost more than what they hold. */
+function newRows(): () => Float64Array {
+  let many: Float64Array = new Float64Array(0);
+  let used = 0;
+  return () => {
+    if (used === many.length) [many, used] = [new Float64Array(2 * PANELS_AT_ONCE * NODES), 0];
+    used += NODES;
+    return many.subarray(used - NODES, used);
+  };
+}
+
+function evaluatePanel(
+  stretches: Stretch[],
+  stretch: number,
+  start: number,
+  width: number,
+  nextRow: () => Float64Array,
+): Panel {
+  const values = nextRow();
   let peak = Number.NEGATIVE_INFINITY;
   for (let j = 0; j < NODES; j++) {
     const value = stretches[stretch].logDensity(start + 0.5 * width * (1 + chebyshevNodes[j]));
@@ -64,7 +83,8 @@ function evaluatePanel(stretches: Stretch[], stretch: number, start: number, wid
     const value = stretches[stretch].logDensity(end);
     if (Number.isFinite(value) && value > reach) reach = value;
   }
-  return { stretch, start, width, peak, reach, values, series: coefficients(values) };
+  const series = coefficients(values, nextRow());
+  return { stretch, start, width, peak, reach, values, series };
 }
 
 /**
@@ -107,7 +127,8 @@ export function largestShare(panels: readonly Panel[]): number {
  * @throws RangeError where the density vanishes everywhere, is infinite or does not converge
  */
 export function resolvePanels(stretches: Stretch[]): Panel[] {
-  let queue = stretches.map((_, index) => evaluatePanel(stretches, index, 0, 1));
+  const nextRow = newRows();
+  let queue = stretches.map((_, index) => evaluatePanel(stretches, index, 0, 1, nextRow));
   const done: Panel[] = [];
   while (queue.length > 0) {
     // Only the panels of now: a parent may have had a point nearer to the peak than its halves do.
@@ -125,8 +146,8 @@ export function resolvePanels(stretches: Stretch[]): Panel[] {
       if (!canSplit || isResolved(panel, logBest)) {
         done.push(panel);
       } else {
-        next.push(evaluatePanel(stretches, panel.stretch, panel.start, half));
-        next.push(evaluatePanel(stretches, panel.stretch, panel.start + half, half));
+        next.push(evaluatePanel(stretches, panel.stretch, panel.start, half, nextRow));
+        next.push(evaluatePanel(stretches, panel.stretch, panel.start + half, half, nextRow));
       }
     }
     if (done.length + next.length > MAX_PANELS + stretches.length) {

@@ -1,6 +1,13 @@
-import { antiderivative, chebyshevNodes, coefficients, evaluateSeries, NODES } from './chebyshev';
+import {
+  antiderivative,
+  chebyshevNodes,
+  coefficients,
+  evaluateSeries,
+  NODES,
+  nodeWeights,
+} from './chebyshev';
 import type { CheckedQuestion } from './checked-question';
-import { logNoDetection } from './host-fraction';
+import { logNoDetection } from './no-detection';
 import type { PriorLaw } from './prior-law';
 import { NO_DATA, stretchesOf } from './product';
 
@@ -14,10 +21,19 @@ export interface Placed {
   median: number;
 }
 
-/** Panels of each piece of the support: fine enough for the narrowest posterior of so many stars. */
-function panelsFor(completeness: Float64Array): number {
+/**
+ * Panels of each piece of the support: fine enough for the narrowest posterior of so many stars.
+ *
+ * A prior that is a power on a piece asks for no more than the fall of the likelihood does; one that
+ * runs over decades, or is known as numbers alone, for more.
+ */
+function panelsFor(completeness: Float64Array, { support, logNorm }: PriorLaw): number {
   const exposure = completeness.reduce((sum, c) => sum + c, 0);
-  return Math.min(256, Math.max(16, Math.ceil(2 * Math.sqrt(exposure) + 0.15 * exposure)));
+  const isPlain = support[0] === 0 && logNorm !== 'numerical';
+  const wanted = isPlain
+    ? 6 + 0.1 * exposure
+    : Math.max(16, 2 * Math.sqrt(exposure) + 0.15 * exposure);
+  return Math.min(256, Math.ceil(wanted));
 }
 
 /**
@@ -37,7 +53,7 @@ export function fractionPlacer(
 ): (detected: readonly number[], truth: number) => Placed {
   const { completeness } = question;
   const stretches = stretchesOf(law, NO_DATA);
-  const each = law.breaks === undefined ? panelsFor(completeness) : 1;
+  const each = law.breaks === undefined ? panelsFor(completeness, law) : 1;
   const count = stretches.length * each;
   const size = count * NODES;
   const base = new Float64Array(size);
@@ -54,13 +70,14 @@ export function fractionPlacer(
       base[i] = stretch.logDensity(v) + logNoDetection(x, completeness);
     }
   }
-  const rows = new Map<number, Float64Array>();
+  const rows = new Array<Float64Array | undefined>(completeness.length).fill(undefined);
   const rowOf = (star: number) => {
-    const known = rows.get(star);
+    const known = rows[star];
     if (known) return known;
     const c = completeness[star];
-    const row = place.map((x, i) => logX[i] - Math.log(1 - c * x));
-    rows.set(star, row);
+    const row = new Float64Array(size);
+    for (let i = 0; i < size; i++) row[i] = logX[i] - Math.log(1 - c * place[i]);
+    rows[star] = row;
     return row;
   };
 
@@ -71,22 +88,27 @@ export function fractionPlacer(
   }
 
   const logs = new Float64Array(size);
-  const values = new Float64Array(NODES);
+  /** Density at the places, in units of its peak; a panel without mass keeps what it had. */
+  const density = new Float64Array(size);
   const masses = new Float64Array(count);
-  const series: (Float64Array | null)[] = new Array(count).fill(null);
 
-  function integratePanel(panel: number, peak: number): number {
-    for (let j = 0; j < NODES; j++) values[j] = Math.exp(logs[panel * NODES + j] - peak);
-    const integral = antiderivative(coefficients(values), 0.5);
-    series[panel] = integral;
-    return Math.max(0, evaluateSeries(integral, 1));
+  function massOf(panel: number, peak: number): number {
+    let sum = 0;
+    for (let j = 0, i = panel * NODES; j < NODES; j++, i++) {
+      density[i] = Math.exp(logs[i] - peak);
+      sum += nodeWeights[j] * density[i];
+    }
+    return 0.5 * sum;
   }
+
+  const integralOf = (panel: number) =>
+    antiderivative(coefficients(density.subarray(panel * NODES, (panel + 1) * NODES)), 0.5);
 
   function shareBelow(panel: number, x: number): number {
     const at = Math.floor(panel / each);
     const { toV, isReversed } = stretches[at];
     const t = 2 * (toV(x) * each - positionOf(panel)) - 1;
-    const inside = evaluateSeries(series[panel] as Float64Array, Math.min(1, Math.max(-1, t)));
+    const inside = evaluateSeries(integralOf(panel), Math.min(1, Math.max(-1, t)));
     return isReversed ? masses[panel] - inside : inside;
   }
 
@@ -103,10 +125,11 @@ export function fractionPlacer(
     while (panel < count - 1 && before + masses[panel] < 0.5 * total) before += masses[panel++];
     const { toX, isReversed } = stretches[Math.floor(panel / each)];
     const wanted = 0.5 * total - before;
+    const integral = integralOf(panel);
     let [low, high] = [-1, 1];
     for (let step = 0; step < 40; step++) {
       const t = 0.5 * (low + high);
-      const inside = evaluateSeries(series[panel] as Float64Array, t);
+      const inside = evaluateSeries(integral, t);
       const isBelow = isReversed ? masses[panel] - inside > wanted : inside < wanted;
       if (isBelow) low = t;
       else high = t;
@@ -128,13 +151,14 @@ export function fractionPlacer(
     const truthPanel = panelAt(truth);
     for (let panel = 0; panel < count; panel++) {
       let reach = Number.NEGATIVE_INFINITY;
-      for (let i = panel * NODES; i < (panel + 1) * NODES; i++) reach = Math.max(reach, logs[i]);
-      series[panel] = null;
-      masses[panel] = reach - peak > NEGLIGIBLE ? integratePanel(panel, peak) : 0;
+      for (let i = panel * NODES; i < (panel + 1) * NODES; i++) {
+        if (logs[i] > reach) reach = logs[i];
+      }
+      masses[panel] = reach - peak > NEGLIGIBLE ? massOf(panel, peak) : 0;
       if (panel < truthPanel) below += masses[panel];
       total += masses[panel];
     }
-    if (series[truthPanel] !== null && truth > low && truth < top) {
+    if (masses[truthPanel] > 0 && truth > low && truth < top) {
       below += shareBelow(truthPanel, truth);
     } else if (truth >= top) below = total;
     return { below: Math.min(1, Math.max(0, below / total)), median: medianOf(total) };

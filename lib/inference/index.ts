@@ -27,7 +27,7 @@ export type {
   RateQuestion,
   UndecidedCandidate,
 } from './contract';
-export type { ContractedMaps, MovingAxis } from './contraction';
+export type { ContractedMaps } from './contraction';
 export { completenessWhileMoving, contractStack, contractStillAxis } from './contraction';
 export type { ExposureContributions } from './contributions';
 export { exposureContributions } from './contributions';
@@ -59,7 +59,6 @@ export {
   poissonUpperLimit,
   wilsonInterval,
 } from './frequentist';
-export { logNoDetection } from './host-fraction';
 export type { IndexNodes, IndexRange } from './index-nodes';
 export type {
   ConditionalLimit,
@@ -89,6 +88,7 @@ export { limitAtLowerFloor, limitsByLevel, TABLE_LEVELS } from './levels';
 export type { LimitMap, LimitMapQuestion } from './limit-map';
 export { limitMap, sumMaps } from './limit-map';
 export type { CompanionMeasurement, Measured, MeasuredDetection } from './measured-places';
+export { logNoDetection } from './no-detection';
 export type {
   CountedCandidate,
   OpenCandidate,

@@ -97,11 +97,15 @@ function integratePanels(stretches: Stretch[], panels: Panel[]): IntegratedDensi
   let peak = Number.NEGATIVE_INFINITY;
   for (const panel of panels) peak = Math.max(peak, panel.peak);
   const resolved: Resolved[] = [];
+  const size = 2 * NODES + 1;
+  const rows = new Float64Array(size * panels.length);
   let total = 0;
   for (const { stretch, start, width, peak: panelPeak, series } of panels) {
     const scale = Math.exp(panelPeak - peak);
-    const density = series.map((c) => c * scale);
-    const integral = antiderivative(density, 0.5 * width);
+    const at = size * resolved.length;
+    const density = rows.subarray(at, at + NODES);
+    for (let k = 0; k < NODES; k++) density[k] = series[k] * scale;
+    const integral = antiderivative(density, 0.5 * width, rows.subarray(at + NODES, at + size));
     const mass = Math.max(0, evaluateSeries(integral, 1));
     resolved.push({ stretch, start, width, density, integral, mass, before: total });
     total += mass;
@@ -127,8 +131,11 @@ function integratePanels(stretches: Stretch[], panels: Panel[]): IntegratedDensi
   let knownMean: number | undefined;
   function mean(): number {
     const { rate, weight } = nodes();
-    knownMean ??= rate.reduce((sum, x, i) => sum + weight[i] * x, 0);
-    return knownMean;
+    if (knownMean !== undefined) return knownMean;
+    let sum = 0;
+    for (let i = 0; i < rate.length; i++) sum += weight[i] * rate[i];
+    knownMean = sum;
+    return sum;
   }
 
   function findPanel(isBefore: (panel: Resolved) => boolean): Resolved {
@@ -152,7 +159,9 @@ function integratePanels(stretches: Stretch[], panels: Panel[]): IntegratedDensi
     get standardDeviation() {
       const { rate, weight } = nodes();
       const centre = mean();
-      return Math.sqrt(rate.reduce((sum, x, i) => sum + weight[i] * (x - centre) ** 2, 0));
+      let sum = 0;
+      for (let i = 0; i < rate.length; i++) sum += weight[i] * (rate[i] - centre) ** 2;
+      return Math.sqrt(sum);
     },
     nodes,
     reweigh(logFactor) {

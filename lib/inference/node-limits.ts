@@ -3,8 +3,8 @@ import { findRoot } from '@/lib/numerics/roots';
 import { exponentialIntegral, gammaP, gammaQuantile } from '@/lib/numerics/special';
 import { antiderivative, chebyshevNodes, coefficients, evaluateSeries, NODES } from './chebyshev';
 import type { RatePrior } from './contract';
-import { logNoDetection } from './host-fraction';
 import { upperLimit } from './intervals';
+import { logNoDetection } from './no-detection';
 import { ratePosterior } from './posterior';
 import { priorLaw } from './priors';
 

@@ -1,5 +1,5 @@
 import { chebyshevNodes, coefficients, NODES } from './chebyshev';
-import { logNoDetection } from './host-fraction';
+import { logNoDetection } from './no-detection';
 
 /**
  * Likelihoods of the rate at many nodes (pairs of indices, or places of a map), which share the

@@ -25,11 +25,15 @@ export function multiply(prior: PriorLaw, likelihood: RateLikelihood): Product {
   return {
     exponentAtZero,
     exponentAtOne,
-    logDensity: ({ x, logX, complement, logComplement }) =>
-      (exponentAtZero === 1 ? 0 : (exponentAtZero - 1) * logX) +
-      (exponentAtOne === 1 ? 0 : (exponentAtOne - 1) * logComplement) +
-      prior.logRegular(x, complement) +
-      likelihood.logRegular(x, complement),
+    logDensity: (place) => {
+      const { x, complement } = place;
+      return (
+        (exponentAtZero === 1 ? 0 : (exponentAtZero - 1) * place.logX) +
+        (exponentAtOne === 1 ? 0 : (exponentAtOne - 1) * place.logComplement) +
+        prior.logRegular(x, complement) +
+        likelihood.logRegular(x, complement)
+      );
+    },
   };
 }
 

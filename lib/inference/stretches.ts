@@ -3,10 +3,37 @@ import type { Stretch } from './integrated-density';
 /** A place in the support. The complement 1 - x and the logarithms are given, because near a
  * singular end x itself has lost their digits. */
 export interface Place {
-  x: number;
-  logX: number;
-  complement: number;
-  logComplement: number;
+  readonly x: number;
+  readonly logX: number;
+  readonly complement: number;
+  readonly logComplement: number;
+}
+
+/** Logarithms are worked out when they are asked for: most densities need neither. */
+class PlaceFromZero implements Place {
+  readonly complement: number;
+  constructor(readonly x: number) {
+    this.complement = 1 - x;
+  }
+  get logX() {
+    return Math.log(this.x);
+  }
+  get logComplement() {
+    return Math.log1p(-this.x);
+  }
+}
+
+class PlaceFromOne implements Place {
+  readonly x: number;
+  constructor(readonly complement: number) {
+    this.x = 1 - complement;
+  }
+  get logX() {
+    return Math.log1p(-this.complement);
+  }
+  get logComplement() {
+    return Math.log(this.complement);
+  }
 }
 
 /** ln of an unnormalised density per dx. */
@@ -14,7 +41,7 @@ export type LogDensity = (place: Place) => number;
 
 /** The place of x, with the digits that x has. */
 export function placeAt(x: number): Place {
-  return { x, logX: Math.log(x), complement: 1 - x, logComplement: Math.log1p(-x) };
+  return new PlaceFromZero(x);
 }
 
 /** Power of v that makes x^(exponent - 1) dx smooth at x = 0. */
@@ -32,12 +59,13 @@ export function fromZero(to: number, exponent: number, logDensity: LogDensity): 
     from: 0,
     to,
     isReversed: false,
-    toX: (v) => to * v ** power,
-    toV: (x) => (x / to) ** (1 / power),
+    toX: (v) => to * (power === 1 ? v : v ** power),
+    toV: (x) => (power === 1 ? x / to : (x / to) ** (1 / power)),
     logDensity(v) {
+      if (power === 1) return logDensity(new PlaceFromZero(to * v)) + logTo;
       const logV = Math.log(v);
       const logX = logTo + power * logV;
-      const x = power === 1 ? to * v : Math.exp(logX);
+      const x = Math.exp(logX);
       const place = { x, logX, complement: 1 - x, logComplement: Math.log1p(-x) };
       return logDensity(place) + Math.log(power) + logX - logV;
     },
@@ -53,12 +81,13 @@ export function fromOne(from: number, exponent: number, logDensity: LogDensity):
     from,
     to: 1,
     isReversed: true,
-    toX: (v) => 1 - span * v ** power,
-    toV: (x) => ((1 - x) / span) ** (1 / power),
+    toX: (v) => 1 - span * (power === 1 ? v : v ** power),
+    toV: (x) => (power === 1 ? (1 - x) / span : ((1 - x) / span) ** (1 / power)),
     logDensity(v) {
+      if (power === 1) return logDensity(new PlaceFromOne(span * v)) + logSpan;
       const logV = Math.log(v);
       const logComplement = logSpan + power * logV;
-      const complement = power === 1 ? span * v : Math.exp(logComplement);
+      const complement = Math.exp(logComplement);
       const place = { x: 1 - complement, logX: Math.log1p(-complement), complement, logComplement };
       return logDensity(place) + Math.log(power) + logComplement - logV;
     },

@@ -51,10 +51,12 @@ export { sampleCompleteness } from './sample-completeness';
 export type { SystemsOnGrid, SystemsSeen } from './systems';
 export { seeSystems, systemsOnGrid } from './systems';
 export { tabulatedLaw } from './tabulated';
-export type { PopulationWeights } from './weights';
+export { sumAlong, sumOfIntegers } from './weighted-sums';
+export type { MovingAxis, PopulationWeights } from './weights';
 export {
   meanCompleteness,
   meanCompletenessOfStack,
   populationWeights,
   SHARE_OUTSIDE_WARNING,
+  weightsWhileMoving,
 } from './weights';

@@ -2,6 +2,7 @@ import type { MapGrid } from '@/lib/sensitivity';
 import { axisWeights, shareInside } from './axis-weights';
 import { populationLaws } from './forms';
 import type { Population } from './population';
+import { sumAlong, sumOfIntegers } from './weighted-sums';
 
 /** Weights whose product with a map is its mean completeness under a population. */
 export interface PopulationWeights {
@@ -29,8 +30,8 @@ export function entirelyOutside({ massMjup, semiMajorAxisAu }: MapGrid): RangeEr
  * Weights of a map's nodes under a population: the mean completeness is W^T C V.
  *
  * Integrates the bilinear interpolant of a map in (ln m, ln a) against the population: per axis
- * W_i is the integral of hat_i times the law, 24 Gauss-Legendre points per interval, cut at the
- * box edges, which need not be nodes. Outside the map completeness counts as 0.
+ * W_i is the integral of hat_i times the law, by Gauss-Legendre points per interval, cut at the box
+ * edges, which need not be nodes. Outside the map completeness counts as 0.
  *
  * @param grid nodes of the map, both axes increasing and positive [M_Jup], [au]
  * @param population laws and box; the box may exceed the map
@@ -52,6 +53,33 @@ export function populationWeights(
   return {
     mass: axisWeights(grid.massMjup, laws.mass),
     semiMajorAxis: axisWeights(grid.semiMajorAxisAu, laws.semiMajorAxis),
+    shareOutsideMap: Math.max(0, 1 - inside),
+  };
+}
+
+/** The axis along which a control moves. */
+export type MovingAxis = 'mass' | 'semiMajorAxis';
+
+/**
+ * Weights of a population that differs from another along one axis alone.
+ *
+ * @param before weights of the other on the same grid; those of the axis that stands still are taken
+ * @throws RangeError as `populationWeights`
+ */
+export function weightsWhileMoving(
+  grid: MapGrid,
+  population: Population,
+  moving: MovingAxis,
+  before: PopulationWeights,
+): PopulationWeights {
+  const laws = populationLaws(population);
+  const inside =
+    shareInside(grid.massMjup, laws.mass) * shareInside(grid.semiMajorAxisAu, laws.semiMajorAxis);
+  if (!(inside > 0)) throw entirelyOutside(grid);
+  const nodes = moving === 'mass' ? grid.massMjup : grid.semiMajorAxisAu;
+  return {
+    ...before,
+    [moving]: axisWeights(nodes, laws[moving]),
     shareOutsideMap: Math.max(0, 1 - inside),
   };
 }
@@ -88,7 +116,8 @@ export function meanCompletenessOfStack(
       `the maps hold ${maps.length} values, not a multiple of ${mass.length} x ${columns} nodes`,
     );
   }
-  const scale = maps instanceof Uint16Array ? 1 / 65535 : 1;
+  const isStored = maps instanceof Uint16Array;
+  const scale = isStored ? 1 / 65535 : 1;
   const [firstRow, endRow] = activeRange(mass);
   const [firstColumn, endColumn] = activeRange(semiMajorAxis);
   const means = new Float64Array(stars);
@@ -96,11 +125,11 @@ export function meanCompletenessOfStack(
     let sum = 0;
     for (let row = firstRow; row < endRow; row++) {
       const start = star * size + row * columns;
-      let along = 0;
-      for (let column = firstColumn; column < endColumn; column++) {
-        along += maps[start + column] * semiMajorAxis[column];
-      }
-      sum += mass[row] * along;
+      sum +=
+        mass[row] *
+        (isStored
+          ? sumOfIntegers(maps, start, semiMajorAxis, firstColumn, endColumn)
+          : sumAlong(maps, start, semiMajorAxis, firstColumn, endColumn));
     }
     means[star] = Math.min(1, Math.max(0, sum * scale));
   }
