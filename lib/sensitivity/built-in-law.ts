@@ -188,6 +188,28 @@ export function builtInMagnitudes(
   return { magnitudes, outsideValidity };
 }
 
+/**
+ * The masses that leave the law's validity at one of the ages or more, as builtInMagnitudes tells.
+ *
+ * @throws RangeError outside the law's range, or for an unknown band
+ */
+export function massesOutsideValidity(
+  massMjup: Float64Array,
+  agesMyr: Float64Array,
+  band: string,
+): number[] {
+  requireBand(band);
+  const cooling = agesMyr.map((age) => {
+    requireLawRange(BUILT_IN_LAW_RANGE.massMinMjup, age);
+    return (REFERENCE_AGE_MYR / age) ** AGE_POWER;
+  });
+  const outside: number[] = [];
+  referenceBodies(massMjup).forEach(({ teffK }, i) => {
+    if (!cooling.every((factor) => isTrusted(massMjup[i], teffK * factor))) outside.push(i);
+  });
+  return outside;
+}
+
 let kept: { massMjup: Float64Array; bodies: CooledBody[] } | null = null;
 
 /** The masses at the law's reference age; kept, because every star of a survey asks for the same. */

@@ -153,15 +153,27 @@ function tableLines(
   return { logAge: table.ageMyr.map(Math.log), fromMag, toMag };
 }
 
+const newDoubles = (length: number): Float64Array => new Float64Array(length);
+
 function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): CoolingPaths {
   const stretches = logAge.length - 1;
   const masses = fromMag.length / stretches;
   const begins = new Int32Array(masses + 1);
-  const fromLogAge: number[] = [];
-  const toLogAge: number[] = [];
-  const cell: number[] = [];
-  const fromShare: number[] = [];
-  const toShare: number[] = [];
+  let count = 0;
+  let [fromLogAge, toLogAge, fromShare, toShare] = [0, 1, 2, 3].map(() => newDoubles(4096));
+  let cell = new Int32Array(4096);
+  const grow = () => {
+    const longer = (values: Float64Array) => {
+      const copy = newDoubles(2 * values.length);
+      copy.set(values);
+      return copy;
+    };
+    [fromLogAge, toLogAge] = [longer(fromLogAge), longer(toLogAge)];
+    [fromShare, toShare] = [longer(fromShare), longer(toShare)];
+    const cells = new Int32Array(2 * cell.length);
+    cells.set(cell);
+    cell = cells;
+  };
   const zero = cellOfZero(cellMag);
   const last = Math.round((FAINTEST_MAG - BRIGHTEST_MAG) / cellMag) - 1;
   const placeOf = (mag: number) => Math.min(last + 0.5, Math.max(0, mag / cellMag + zero));
@@ -186,7 +198,7 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     if (xB > x) addStretch(x, xB, c, place - c, b - c, first);
   };
   const addStretch = (xA: number, xB: number, c: number, a: number, b: number, first: number) => {
-    const before = cell.length - 1;
+    const before = count - 1;
     const goesOn = before >= first && cell[before] === c && toLogAge[before] === xA;
     const isBounded = Number.isFinite(xA) && Number.isFinite(xB);
     if (goesOn && isBounded && Number.isFinite(fromLogAge[before]) && isOneLine(before, xB, a, b)) {
@@ -194,11 +206,13 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
       toShare[before] = b;
       return;
     }
-    fromLogAge.push(xA);
-    toLogAge.push(xB);
-    cell.push(c);
-    fromShare.push(a);
-    toShare.push(b);
+    if (count === cell.length) grow();
+    fromLogAge[count] = xA;
+    toLogAge[count] = xB;
+    cell[count] = c;
+    fromShare[count] = a;
+    toShare[count] = b;
+    count++;
   };
   const isOneLine = (before: number, xB: number, a: number, b: number) => {
     if (cell[before] === UNDETECTABLE) return true;
@@ -210,7 +224,7 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
   };
 
   for (let i = 0; i < masses; i++) {
-    const first = cell.length;
+    const first = count;
     begins[i] = first;
     const row = i * stretches;
     addLine(-Infinity, logAge[0], fromMag[row], fromMag[row], first);
@@ -220,7 +234,7 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     const end = toMag[row + stretches - 1];
     addLine(logAge[stretches], Infinity, end, end, first);
   }
-  begins[masses] = cell.length;
+  begins[masses] = count;
   let longest = 0;
   const fades = new Uint8Array(masses).fill(1);
   for (let i = 0; i < masses; i++) {
@@ -235,11 +249,11 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     fades,
     cellMag,
     begins,
-    fromLogAge: Float64Array.from(fromLogAge),
-    toLogAge: Float64Array.from(toLogAge),
-    cell: Int32Array.from(cell),
-    fromShare: Float64Array.from(fromShare),
-    toShare: Float64Array.from(toShare),
+    fromLogAge: fromLogAge.slice(0, count),
+    toLogAge: toLogAge.slice(0, count),
+    cell: cell.slice(0, count),
+    fromShare: fromShare.slice(0, count),
+    toShare: toShare.slice(0, count),
   };
 }
 

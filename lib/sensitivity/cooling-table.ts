@@ -10,20 +10,27 @@ export interface FainterWhenHeavier {
   heavierMjup: number;
 }
 
+/** Every star of a survey asks about the same table. */
+const checked = new WeakMap<CoolingTable, FainterWhenHeavier[]>();
+
 /**
  * Refuses a table that cannot be interpolated, and lists where magnitude rises with mass.
  *
- * @param table axes strictly increasing, at least 2 each; magnitudes [mass, age], NaN = missing
+ * @param table not modified afterwards: what was found is kept; axes strictly increasing, at least 2 each; magnitudes [mass, age], NaN = missing
  * @returns places that deserve a warning, in the table's order
  * @throws RangeError for short or disordered axes, no band, a wrong number of entries or an infinite one
  */
 export function checkCoolingTable(table: CoolingTable): FainterWhenHeavier[] {
+  const known = checked.get(table);
+  if (known) return known;
   requirePositiveAxis(table.massMjup, `massMjup of ${table.name}`);
   requirePositiveAxis(table.ageMyr, `ageMyr of ${table.name}`);
   const bands = Object.keys(table.magnitudes);
   if (bands.length === 0)
     throw new RangeError(`${table.name} must have at least one band, got none`);
-  return bands.flatMap((band) => checkBand(table, band));
+  const places = bands.flatMap((band) => checkBand(table, band));
+  checked.set(table, places);
+  return places;
 }
 
 function checkBand(table: CoolingTable, band: string): FainterWhenHeavier[] {
@@ -59,6 +66,8 @@ export interface TableLookup {
   magnitude(massMjup: number, ageMyr: number): number;
 }
 
+const prepared = new WeakMap<CoolingTable, Map<string, TableLookup>>();
+
 /**
  * Prepares a table for interpolation, bilinear in (ln m, ln t) on the magnitude.
  *
@@ -69,6 +78,14 @@ export interface TableLookup {
  * @throws RangeError for an unknown band
  */
 export function tableLookup(table: CoolingTable, band: string): TableLookup {
+  const bands = prepared.get(table) ?? new Map<string, TableLookup>();
+  prepared.set(table, bands);
+  const lookup = bands.get(band) ?? newLookup(table, band);
+  bands.set(band, lookup);
+  return lookup;
+}
+
+function newLookup(table: CoolingTable, band: string): TableLookup {
   if (!Object.hasOwn(table.magnitudes, band)) {
     const known = Object.keys(table.magnitudes).join(', ');
     throw new RangeError(`band must be one of ${known} for ${table.name}, got ${band}`);

@@ -1,4 +1,9 @@
-import { BUILT_IN_LAW_NAME, BUILT_IN_LAW_RANGE, builtInMagnitudes } from './built-in-law';
+import {
+  BUILT_IN_LAW_NAME,
+  BUILT_IN_LAW_RANGE,
+  builtInMagnitudes,
+  massesOutsideValidity,
+} from './built-in-law';
 import { checkCoolingTable, tableLookup } from './cooling-table';
 import type { CoolingRelation, CoolingReport, CoolingTable, SensitivitySettings } from './types';
 
@@ -93,14 +98,21 @@ export function coolingReport(
   policy: AgePolicy,
   starName: string,
 ): CoolingReport {
-  let told = agesMyr;
   if (relation.kind === 'built-in') {
     // The law's temperature falls with age, so what holds at both ends holds between them.
     const [least, most] = [agesMyr.reduce(smaller), agesMyr.reduce(larger)];
     const { ageMinMyr, ageMaxMyr } = BUILT_IN_LAW_RANGE;
-    if (least >= ageMinMyr && most <= ageMaxMyr) told = Float64Array.of(least, most);
+    if (least >= ageMinMyr && most <= ageMaxMyr) {
+      const flagged = massesOutsideValidity(massMjup, Float64Array.of(least, most), band);
+      return {
+        massNodesOutside: 0,
+        ageNodesClamped: 0,
+        lawNodesOutsideValidity: flagged.length,
+        flaggedMassNodes: flagged,
+      };
+    }
   }
-  return coolNodes(relation, band, massMjup, told, policy, starName).report;
+  return coolNodes(relation, band, massMjup, agesMyr, policy, starName).report;
 }
 
 const smaller = (a: number, b: number) => Math.min(a, b);

@@ -26,11 +26,8 @@ export function writeNpy(
   try {
     writeSync(descriptor, npyHeader(shape));
     for (const part of parts) {
-      const bytes = Buffer.alloc(4 * part.length);
-      part.forEach((value, i) => {
-        bytes.writeFloatLE(value, 4 * i);
-      });
-      writeSync(descriptor, bytes);
+      // In the machine's own order, which is the file's on every one that Node.js runs on but one.
+      writeSync(descriptor, new Uint8Array(Float32Array.from(part).buffer));
       written += part.length;
     }
   } finally {
