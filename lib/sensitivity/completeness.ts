@@ -21,7 +21,7 @@ import type {
 import { removeUnstableNodes } from './unstable-zone';
 
 /** Changes whenever the same inputs would give other numbers, so that stored maps are not reused. */
-export const ENGINE_VERSION: string = '2';
+export const ENGINE_VERSION: string = '3';
 
 /**
  * Completeness of one star, P(detected | companion of mass m and semi-major axis a), without random
