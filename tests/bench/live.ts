@@ -1,7 +1,13 @@
 import { liveAnswer } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { LiveViews } from '@/components/runs/live-views';
-import { type AnswerSettings, answerFromView, viewPopulation } from '@/lib/inference';
+import {
+  type AnswerSettings,
+  answerFromView,
+  contractStillAxis,
+  viewPopulation,
+} from '@/lib/inference';
+import { populationWeights } from '@/lib/population';
 import type { Amount } from './amount';
 import { LEVEL, referenceLimit, relativeError } from './posterior';
 import type { Errors, Line, Target } from './report';
@@ -27,6 +33,8 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
   };
   const view = viewPopulation(maps, GRID, POPULATION);
   const look = () => viewPopulation(maps, GRID, POPULATION);
+  const { semiMajorAxis } = populationWeights(GRID, POPULATION);
+  const take = () => contractStillAxis(maps, GRID, 'mass', semiMajorAxis);
   const sample: LiveSample = { grid: GRID, stars: [], maps, companions: detections, open: [] };
   const setting = {
     definition: POPULATION,
@@ -58,6 +66,7 @@ function linesOf(survey: MappedSurvey, rounds: number): Line[] {
   };
   return [
     measured('view of the population', () => look().exposure, {}, []),
+    measured('an axis is taken, once a drag', () => take().values[0], {}, []),
     measured('prior moves', () => answerFromView(view, asked).limit, errors, targets),
     measured('population moves', () => answerFromView(look(), asked).limit, errors, targets),
     measured('one axis moves', () => answerFromView(drag(), asked).limit, errors, targets),

@@ -37,8 +37,7 @@ const NOTES = [
   'Error of storage: the largest difference of the two sums.',
   'Targets of all maps: those of a grid of 100 by 100 coded as differences of neighbours.',
   'A run sends all its maps as uint16, without compression; no address sends the mean map alone.',
-  'A run reads its maps through the models, as hex text; no package for COPY is among ours, and the',
-  'line beside it takes the messages of the driver itself.',
+  'A run reads its maps by a binary copy, one at a time; plain rows come as hex text, some at once.',
 ];
 
 const YARDSTICK_NOTE = () =>
