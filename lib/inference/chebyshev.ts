@@ -38,7 +38,10 @@ for (let j = 0; j < NODES; j++) {
  * @param series where to write them, all 0
  * @returns shape [NODES]: f(t) = sum of c_k T_k(t), -1 <= t <= 1
  */
-export function coefficients(values: Float64Array, series = new Float64Array(NODES)): Float64Array {
+export function coefficients(
+  values: Float64Array,
+  series: Float64Array = new Float64Array(NODES),
+): Float64Array {
   // Nodes lie in pairs about 0, on which a term is even or odd.
   for (let j = 0; j < HALF; j++) {
     const even = values[NODES - 1 - j] + values[j];
@@ -62,7 +65,7 @@ export function coefficients(values: Float64Array, series = new Float64Array(NOD
 export function antiderivative(
   series: Float64Array,
   scale: number,
-  integral = new Float64Array(NODES + 1),
+  integral: Float64Array = new Float64Array(NODES + 1),
 ): Float64Array {
   integral[1] = scale * (series[0] - 0.5 * series[2]);
   for (let k = 2; k < NODES - 1; k++)
