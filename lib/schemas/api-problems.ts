@@ -36,7 +36,13 @@ export const apiProblems: readonly { status: number; means: string; codes: reado
   },
   {
     status: 503,
-    means: 'The database does not answer; nothing was stored; Retry-After',
-    codes: ['unavailable'],
+    means:
+      'The database does not answer, or its disk is full: “detail” says what is stored; Retry-After',
+    codes: ['unavailable', 'disk-full'],
+  },
+  {
+    status: 507,
+    means: 'The disk for incoming files is full; nothing was stored',
+    codes: ['disk-full'],
   },
 ];

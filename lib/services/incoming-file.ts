@@ -1,16 +1,16 @@
 import { createHash, randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { mkdir, open, rm } from 'node:fs/promises';
+import { open, rm } from 'node:fs/promises';
 import path from 'node:path';
 import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { escapeLiteral } from 'pg';
 import type { Transaction } from 'sequelize';
-import { config } from '@/lib/config';
-import { InputError } from '@/lib/errors';
+import { InputError, LabError } from '@/lib/errors';
 import { uploadLimits } from '@/lib/formats';
 import { database } from '@/models';
 import { copyRows } from '@/models/copy-rows';
+import { incomingFolder, noRoomFor } from './disk';
 
 /** Parts of this size keep memory flat, however large the file is. */
 const PART_BYTES = 1 << 20;
@@ -51,8 +51,7 @@ function statedDigest(headers: Headers): string | null {
 export async function receiveFile(request: Request): Promise<IncomingFile> {
   const stated = statedDigest(request.headers);
   const statedLength = request.headers.get('content-length');
-  const folder = path.resolve(config().dataDirectory, 'incoming');
-  await mkdir(folder, { recursive: true });
+  const folder = await incomingFolder();
   const filePath = path.join(folder, randomUUID());
   const discard = () => rm(filePath, { force: true });
   const hash = createHash('sha256');
@@ -96,7 +95,9 @@ export async function receiveFile(request: Request): Promise<IncomingFile> {
     return { path: filePath, byteLength, sha256, discard };
   } catch (error) {
     await discard();
-    if (error instanceof InputError) throw error;
+    if (error instanceof LabError) throw error;
+    const noRoom = noRoomFor(error);
+    if (noRoom !== null) throw noRoom;
     throw new InputError(
       {
         code: 'truncated',

@@ -4,7 +4,8 @@ import { type Budget, limits } from '@/lib/access/attempts';
 import { withinRequest } from '@/lib/access/request-id';
 import { config } from '@/lib/config';
 import { observeRequest } from '@/lib/services/metrics';
-import { isDatabaseAway, logRequest, problemOf } from './problem';
+import { isDatabaseAway } from './database-fault';
+import { logRequest, problemOf } from './problem';
 
 /** What becomes known of a request while it is worked on. */
 export interface Seen {

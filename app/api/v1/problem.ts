@@ -1,7 +1,8 @@
 import type { KnownPerson } from '@/lib/access/actor';
 import { config } from '@/lib/config';
-import { AccessError, Conflict, InputError, LabError, TooMany } from '@/lib/errors';
+import { AccessError, InputError, LabError, TooMany } from '@/lib/errors';
 import type { Problem } from '@/lib/schemas/problem';
+import { databaseFault } from './database-fault';
 
 const TITLES: Record<number, string> = {
   400: 'The request cannot be read',
@@ -19,41 +20,11 @@ const TITLES: Record<number, string> = {
   507: 'No space left',
 };
 
-const UNAVAILABLE = /^Sequelize(Connection|HostNotFound|HostNotReachable|ConnectionAcquire)/;
 const RETRY_AFTER_S = 5;
-/** Ended by the server, or by the network, while a statement was on its way. */
-const LOST =
-  /^(57P0[123]|08\d{3}|ECONNRESET|ECONNREFUSED|EPIPE)$|Connection terminated|connection error|Client was closed/;
-
-/** Whether the database was not there, or went away in between. */
-export function isDatabaseAway(error: unknown): boolean {
-  if (!(error instanceof Error)) return false;
-  if (UNAVAILABLE.test(error.name)) return true;
-  const { original } = error as { original?: unknown };
-  if (original instanceof Error) return isDatabaseAway(original);
-  const { code } = error as { code?: unknown };
-  return LOST.test(typeof code === 'string' ? code : '') || LOST.test(error.message);
-}
-
-/** Faults of the database that a person can act on; everything else stays an unknown fault. */
-function known(error: unknown): unknown {
-  const name = error instanceof Error ? error.name : '';
-  if (name === 'SequelizeUniqueConstraintError') {
-    return new Conflict('Somebody was quicker: that name or number is taken');
-  }
-  if (UNAVAILABLE.test(name)) {
-    return new LabError('unavailable', 503, 'The database does not answer; nothing was stored');
-  }
-  if (!(error instanceof LabError) && isDatabaseAway(error)) {
-    const words = 'The connection to the database was lost: read again whether the change is there';
-    return new LabError('unavailable', 503, words);
-  }
-  return error;
-}
 
 /** RFC 9457 problem document: the one place where errors become status codes. */
 export function problemOf(error: unknown, requestId: string): Response {
-  const fault = known(error);
+  const fault = databaseFault(error);
   const isOurs = fault instanceof LabError;
   const status = isOurs ? fault.status : 500;
   const problem: Problem = {
