@@ -27,6 +27,7 @@ const versionsFolder = '/usr/lib/postgresql';
  * @property {string} binaries folder of the server's programs
  * @property {{ uid?: number, gid?: number }} owner who runs it; the server refuses to run as root
  * @property {string} connectionFile
+ * @property {Record<string, string>} [more] settings of the server beside the usual ones
  * @property {{ id: string, port: number, password: string, superuserPassword: string }} connection
  */
 

@@ -12,7 +12,7 @@ import { isAlive, readProcess, run, wait, waitUntil } from './process-run.mjs';
 export const applicationRole = 'rarebound';
 
 /** Arguments of the server: loopback only, no socket file, and durable unless it serves tests. */
-export function serverArguments(/** @type {Cluster} */ { data, connection, durable }) {
+export function serverArguments(/** @type {Cluster} */ { data, connection, durable, more = {} }) {
   const settings = {
     listen_addresses: '127.0.0.1',
     port: String(connection.port),
@@ -24,6 +24,7 @@ export function serverArguments(/** @type {Cluster} */ { data, connection, durab
     fsync: durable ? 'on' : 'off',
     synchronous_commit: durable ? 'on' : 'off',
     full_page_writes: durable ? 'on' : 'off',
+    ...more,
   };
   return [
     '-D',

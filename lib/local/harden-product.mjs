@@ -12,7 +12,14 @@ import {
 } from './test-database.mjs';
 import { buildWeb, isBuildFresh } from './web-build.mjs';
 
-const distFolder = '.next-harden';
+export const distFolder = '.next-harden';
+
+/** The production build of the harden run, made where it is missing or old. */
+export async function ensureWebBuild(/** @type {(line: string) => void} */ say) {
+  if (isBuildFresh(distFolder)) return;
+  say('Building the web part');
+  await buildWeb(distFolder);
+}
 
 /**
  * A product for rows that need one: own database in the tests' cluster, own folder, ports and
@@ -37,10 +44,7 @@ export class HardenProduct {
   }
 
   async #bringUp() {
-    if (!isBuildFresh(distFolder)) {
-      this.say('Building the web part');
-      await buildWeb(distFolder);
-    }
+    await ensureWebBuild(this.say);
     this.#cluster = await prepareTestDatabase({ outlivesThisProcess: false });
     const { cluster } = this.#cluster;
     await copyTemplate(cluster, this.#database);

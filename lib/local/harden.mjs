@@ -5,7 +5,8 @@ import path from 'node:path';
 import { bundleScripts } from './bundle.mjs';
 import { dataFolder, folderDigest, LauncherProblem, root, runCommand } from './environment.mjs';
 import { holdExclusively } from './exclusive.mjs';
-import { HardenProduct } from './harden-product.mjs';
+import { HardenLab } from './harden-lab.mjs';
+import { distFolder, ensureWebBuild, HardenProduct } from './harden-product.mjs';
 import { ensurePackages } from './packages.mjs';
 import { endRunning } from './process-run.mjs';
 import { emptyFolder } from './test-database.mjs';
@@ -14,6 +15,8 @@ import { emptyFolder } from './test-database.mjs';
 
 const bundleFolder = 'dist/harden';
 const rowsFolder = 'tests/harden/rows';
+/** A process of its own that a row starts. */
+const engineProcess = 'tests/harden/engine-process.ts';
 const say = (/** @type {string} */ line) => process.stdout.write(`${line}\n`);
 const note = (/** @type {string} */ line) => process.stderr.write(`    ${line}\n`);
 
@@ -24,7 +27,7 @@ async function loadRows() {
     .sort()
     .map((name) => `${rowsFolder}/${name}`);
   await bundleScripts(bundleFolder);
-  await bundleScripts(bundleFolder, entries);
+  await bundleScripts(bundleFolder, [...entries, engineProcess]);
   const load = createRequire(import.meta.url);
   return entries.map((entry) => {
     const { row } = load(path.join(root, bundleFolder, entry.replace(/\.ts$/, '.js')));
@@ -36,11 +39,18 @@ async function loadRows() {
 /** @returns {Promise<import('../../tests/harden/row').Measured & { seconds: number }>} */
 async function measureRow(/** @type {Row} */ row, /** @type {HardenProduct} */ product) {
   const start = Date.now();
+  const laboratories = [];
   const bench = {
     root,
     bundleFolder,
     folder: emptyFolder(path.join(dataFolder(), 'harden', row.name)),
     product: () => product.start(),
+    laboratory: async (options) => {
+      if (options.web) await ensureWebBuild(note);
+      const opened = await HardenLab.open({ bundleFolder, distFolder }, options);
+      laboratories.push(opened);
+      return opened;
+    },
     say: note,
   };
   try {
@@ -50,6 +60,8 @@ async function measureRow(/** @type {Row} */ row, /** @type {HardenProduct} */ p
     const words = error instanceof LauncherProblem ? error.message : error.stack;
     const seconds = (Date.now() - start) / 1000;
     return { isMet: false, figure: 'not measured', details: {}, notes: [words], seconds };
+  } finally {
+    for (const opened of laboratories) await opened.close();
   }
 }
 

@@ -22,10 +22,13 @@ export class Supervisor {
 
   /**
    * @param {{ logsFolder: string, say: (line: string) => void,
-   *   onChange?: (processes: { name: string, pid: number, startTicks?: string }[]) => void }} options
+   *   onChange?: (processes: { name: string, pid: number, startTicks?: string }[]) => void,
+   *   pauseMs?: (failures: number) => number }} options pauseMs: other waits before a restart, for
+   *   a run that kills services again and again
    */
-  constructor({ logsFolder, say, onChange = () => {} }) {
+  constructor({ logsFolder, say, onChange = () => {}, pauseMs = restartPauseMs }) {
     this.logsFolder = logsFolder;
+    this.pauseMs = pauseMs;
     this.say = say;
     this.onChange = onChange;
     mkdirSync(logsFolder, { recursive: true });
@@ -91,7 +94,7 @@ export class Supervisor {
         this.say(lastLines(this.logFile(service), 8));
       }
       kept.failures += 1;
-      const pauseMs = restartPauseMs(kept.failures);
+      const pauseMs = this.pauseMs(kept.failures);
       this.say(`${service.name} is started again in ${pauseMs / 1000} s`);
       await waitUntil(() => this.#stopping, pauseMs);
       if (this.#stopping) return;

@@ -4,22 +4,37 @@ import path from 'node:path';
 import type { UploadKind } from '@/lib/formats';
 import type { RunningProduct } from './row';
 
-const LAB = 'breakwater';
+const DEMONSTRATION = 'breakwater';
 const ATTEMPTS = 20;
 
 const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms));
 
-/** The product as a program sees it: with the token that the seed wrote. */
+/** Any answer but a good one. */
+export class Refused extends Error {
+  constructor(
+    route: string,
+    readonly status: number,
+    readonly text: string,
+  ) {
+    super(`${route}: ${status} ${text}`);
+  }
+}
+
+/** The product as a program sees it: with a token, by default the one that the seed wrote. */
 export class Api {
   private readonly token: string;
 
-  constructor(private readonly product: RunningProduct) {
-    this.token = readFileSync(path.join(product.folder, 'demo-token'), 'utf8').trim();
+  constructor(
+    private readonly product: Pick<RunningProduct, 'address' | 'folder'>,
+    token?: string,
+    private readonly lab = DEMONSTRATION,
+  ) {
+    this.token = token ?? readFileSync(path.join(product.folder, 'demo-token'), 'utf8').trim();
   }
 
-  /** @throws Error with the problem document of any refusal but "too many", which is waited for */
+  /** @throws Refused with the problem document of any refusal but "too many", which is waited for */
   async ask(route: string, init: RequestInit = {}): Promise<Response> {
-    const address = `${this.product.address}/api/v1/collaborations/${LAB}/${route}`;
+    const address = `${this.product.address}/api/v1/collaborations/${this.lab}/${route}`;
     for (let attempt = 1; ; attempt++) {
       const response = await fetch(address, {
         ...init,
@@ -27,7 +42,7 @@ export class Api {
       });
       if (response.ok) return response;
       const isCrowd = response.status === 429 && attempt < ATTEMPTS;
-      if (!isCrowd) throw new Error(`${route}: ${response.status} ${await response.text()}`);
+      if (!isCrowd) throw new Refused(route, response.status, await response.text());
       await pause(1000 * Number(response.headers.get('retry-after') ?? 5));
     }
   }

@@ -8,6 +8,35 @@ export interface RunningProduct {
   pidOf(service: 'web' | 'worker'): number;
 }
 
+export interface LaboratoryOptions {
+  /** Worker processes of one thread each. */
+  workers: number;
+  web: boolean;
+  /** Where its database lies, when not in the laboratory's folder. */
+  database?: string;
+  /** Settings of the database server beside the usual ones. */
+  settings?: Record<string, string>;
+}
+
+/** An empty laboratory of the row's own, whose processes it may kill. */
+export interface Laboratory {
+  address: string;
+  databaseUrl: string;
+  folder: string;
+  /** Services are postgres, web, worker-1, worker-2 … */
+  pidOf(service: string): number;
+  /** False between the end of a service and its next start. */
+  isRunning(service: string): boolean;
+  /** @returns the name of one more worker */
+  addWorker(threads?: number): Promise<string>;
+  /** kill -9, by number; it is started again by itself. @returns whether it was alive */
+  kill(service: string): Promise<boolean>;
+  isDatabaseUp(): Promise<boolean>;
+  /** Stops everything. @returns how many pages of the database have a wrong checksum */
+  stopAndCheck(): Promise<number>;
+  close(): Promise<void>;
+}
+
 export interface Bench {
   /** The project's folder. */
   root: string;
@@ -16,6 +45,8 @@ export interface Bench {
   /** An empty folder for what the row writes. */
   folder: string;
   product(): Promise<RunningProduct>;
+  /** One of its own; it is closed with the row. One at a time. */
+  laboratory(options: LaboratoryOptions): Promise<Laboratory>;
   /** One line of news while a row runs. */
   say(line: string): void;
 }
