@@ -50,10 +50,10 @@ test('an analysis of a broken law shows its posterior, limits, map and stars, an
   const row = levels.getByRole('row', { name: /^95/ });
   await expect(row.getByRole('cell').first()).toHaveText(shown.replace(/\s?%$/, ''));
   for (const title of ['Sensitivity', 'Detections', 'Which stars carry the limit', 'Provenance']) {
-    await expect(page.getByRole('heading', { name: title })).toBeVisible();
+    await expect(page.getByRole('heading', { name: new RegExp(`^\\d${title}$`) })).toBeVisible();
   }
   await expect(page.getByRole('link', { name: 'Freeze' })).toHaveAttribute('href', /freeze/);
-  await page.getByRole('button', { name: 'Export' }).click();
+  await page.getByRole('button', { name: /^Export: files of run/ }).click();
   await expect(page.getByRole('dialog').getByRole('link', { name: 'CSV' }).first()).toBeVisible();
   stop();
   expect(faults).toEqual([]);
