@@ -164,7 +164,7 @@ function open(databaseUrl: string, poolSize: number): Sequelize {
   return new Sequelize(databaseUrl, {
     dialect: 'postgres',
     logging: false,
-    pool: { max: poolSize, min: 0, idle: 10_000 },
+    pool: { max: poolSize, min: 0, idle: 5_000 },
     dialectOptions: { idle_in_transaction_session_timeout: 60_000 },
   });
 }

@@ -1,8 +1,8 @@
-import type { Transaction } from 'sequelize';
 import type { MapState } from '@/lib/schemas/map-states';
 import { CompletenessMapRow, type TargetRow } from './index';
 import { findMapChange } from './map-changes';
 import { planMaps } from './map-plan';
+import { readMapStamps } from './map-stamps';
 
 type Standing = Omit<MapState, 'target' | 'targetId' | 'mapId'>;
 
@@ -12,17 +12,43 @@ const plain = (standing: MapState['standing']): Standing => ({
   words: null,
 });
 
-/** How the map of each target of a survey stands against what its curves should give now. */
-export async function readMapStates(
-  survey: { collaborationId: string; id: string },
-  transaction?: Transaction,
-): Promise<MapState[]> {
-  const { collaborationId, id: surveyId } = survey;
-  const plan = await planMaps({ collaborationId, surveyId }, transaction);
+interface Survey {
+  collaborationId: string;
+  id: string;
+}
+
+/** Enough for fifty surveys of 500 stars, some 10 MB; the oldest entry goes first. */
+const CACHE_SIZE = 100;
+const cache = new Map<string, { stamp: string; states: MapState[] }>();
+
+/**
+ * How the map of each target stands against what its curves should give now. To work that out takes
+ * a digest a target, so it is done again only where something has changed that it rests on.
+ */
+export async function readMapStates(surveys: Survey[]): Promise<Map<string, MapState[]>> {
+  const stamps = await readMapStamps(surveys.map(({ id }) => id));
+  const found = new Map<string, MapState[]>();
+  for (const survey of surveys) {
+    const stamp = stamps.get(survey.id);
+    const known = cache.get(survey.id);
+    if (known && known.stamp === stamp) {
+      found.set(survey.id, known.states);
+      continue;
+    }
+    const states = await compareMaps(survey);
+    found.set(survey.id, states);
+    // Read before what it stands for: a change in between makes it differ the next time.
+    if (stamp !== undefined) cache.set(survey.id, { stamp, states });
+  }
+  while (cache.size > CACHE_SIZE) cache.delete(cache.keys().next().value as string);
+  return found;
+}
+
+async function compareMaps({ collaborationId, id: surveyId }: Survey): Promise<MapState[]> {
+  const plan = await planMaps({ collaborationId, surveyId });
   const stored = await CompletenessMapRow.findAll({
     attributes: ['id', 'digest', 'inputs', 'origin'],
     where: { id: plan.targets.flatMap(({ mapId }) => mapId ?? []), collaborationId },
-    transaction,
   });
   const mapOf = new Map(stored.map((map) => [map.id, map]));
   const wantedOf = new Map(plan.wanted.map((wanted) => [wanted.targetId, wanted]));

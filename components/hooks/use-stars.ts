@@ -61,6 +61,16 @@ export function decidePair(
   return request(path, answer('overlapsSchema'), { method: 'POST', body: { why } });
 }
 
+/** Takes the stars of several pairs for one each: all pairs or none. */
+export function confirmPairs(
+  collaboration: string,
+  pairs: string[],
+  why: string,
+): Promise<Overlaps> {
+  const path = apiPath(collaboration, 'stars', 'overlaps', 'confirm');
+  return request(path, answer('overlapsSchema'), { method: 'POST', body: { pairs, why } });
+}
+
 export async function proposePairs(collaboration: string): Promise<number> {
   const path = apiPath(collaboration, 'stars', 'overlaps');
   return (await request(path, answer('proposedSchema'), { method: 'POST' })).proposed;

@@ -2,18 +2,28 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { decidePair, proposePairs, useOverlaps, type Verdict } from '@/components/hooks/use-stars';
+import {
+  confirmPairs,
+  decidePair,
+  proposePairs,
+  useOverlaps,
+  type Verdict,
+} from '@/components/hooks/use-stars';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { Overlaps, StarMatchView } from '@/lib/schemas/stars';
 import { PairCard } from './pair-card';
+import { PlainPairs } from './plain-pairs';
 import { StarTabs } from './star-tabs';
 
 interface OverlapBoardProps {
   collaboration: string;
   initial: Overlaps;
 }
+
+/** As many as the route takes in one request. */
+const MOST_AT_ONCE = 500;
 
 /** Pairs that may be one star: what speaks for it, and a person's word. */
 export function OverlapBoard({ collaboration, initial }: OverlapBoardProps) {
@@ -23,6 +33,14 @@ export function OverlapBoard({ collaboration, initial }: OverlapBoardProps) {
   const decide = async (pair: string, verdict: Verdict, why: string) => {
     await mutate(await decidePair(collaboration, pair, verdict, why), { revalidate: false });
   };
+  const confirm = async (pairs: string[], why: string) => {
+    await mutate(await confirmPairs(collaboration, pairs, why), { revalidate: false });
+    setSaid({
+      tone: 'ok',
+      words: pairs.length === 1 ? '1 pair joined' : `${pairs.length} pairs joined`,
+    });
+  };
+  const plain = open.filter(({ isPlain }) => isPlain).slice(0, MOST_AT_ONCE);
   const look = async () => {
     try {
       const found = await proposePairs(collaboration);
@@ -60,7 +78,14 @@ export function OverlapBoard({ collaboration, initial }: OverlapBoardProps) {
           context={
             open.length === 1 ? '1 pair, surest first' : `${open.length} pairs, surest first`
           }
-          tools={canDecide && <Button onClick={() => void look()}>Look again</Button>}
+          tools={
+            canDecide && (
+              <>
+                {plain.length > 1 && <PlainPairs pairs={plain} onConfirm={confirm} />}
+                <Button onClick={() => void look()}>Look again</Button>
+              </>
+            )
+          }
         />
         {said && <Notice tone={said.tone} title={said.words} isAnnounced />}
         {open.length > 0 ? cards(open) : <p className="py-2 text-ink3">No pair waits.</p>}

@@ -12,13 +12,22 @@ interface ReasonDialogProps {
   /** What follows from it. */
   children: ReactNode;
   action: string;
+  /** Why it cannot be done yet, beside a missing reason. */
+  missing?: string | undefined;
   onClose(): void;
   /** Does it; a refusal is shown. */
   onDecide(why: string): Promise<void>;
 }
 
 /** Asks for the reason of a decision that others will read. */
-export function ReasonDialog({ title, children, action, onClose, onDecide }: ReasonDialogProps) {
+export function ReasonDialog({
+  title,
+  children,
+  action,
+  missing,
+  onClose,
+  onDecide,
+}: ReasonDialogProps) {
   const [why, setWhy] = useState('');
   const [isBusy, setBusy] = useState(false);
   const [refusal, setRefusal] = useState<string | null>(null);
@@ -44,7 +53,7 @@ export function ReasonDialog({ title, children, action, onClose, onDecide }: Rea
             variant="primary"
             isBusy={isBusy}
             disabledReason={
-              why.trim() === '' ? 'State the reason; it is kept in the log' : undefined
+              missing ?? (why.trim() === '' ? 'State the reason; it is kept in the log' : undefined)
             }
             onClick={() => void decide()}
           >

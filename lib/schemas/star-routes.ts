@@ -3,6 +3,7 @@ import {
   adoptionPreviewSchema,
   adoptManySchema,
   adoptSchema,
+  decideManySchema,
   decisionSchema,
   overlapsSchema,
   previewAdoptionSchema,
@@ -44,6 +45,13 @@ export const starRoutes: ApiRoute[] = [
   route('post', `${team}/stars/overlaps`, 'write', 'Look again for pairs that may be one star', {
     answer: proposedSchema,
   }),
+  route(
+    'post',
+    `${team}/stars/overlaps/confirm`,
+    'write',
+    'Take the two of each pair for one star: of all pairs or of none',
+    { body: decideManySchema, answer: overlapsSchema },
+  ),
   route('post', `${pair}/confirm`, 'write', 'Take the two for one star', {
     body: decisionSchema,
     answer: overlapsSchema,

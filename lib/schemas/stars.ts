@@ -164,6 +164,8 @@ export const starMatchSchema = z.object({
   evidence: matchEvidenceSchema,
   /** 0: as good as sure, 1: at the edge of the rule. */
   doubt: z.number(),
+  /** Near enough to the middle of the rule, and the only pair of its stars, to be taken with others. */
+  isPlain: z.boolean(),
   stars: z.tuple([matchedStarSchema, matchedStarSchema]),
   decidedBy: z.string().nullable(),
   decidedAt: moment.nullable(),
@@ -184,6 +186,10 @@ export type Overlaps = z.infer<typeof overlapsSchema>;
 
 export const proposedSchema = z.object({ proposed: z.number() });
 export const decisionSchema = z.strictObject({ why: lineSchema(300) });
+export const decideManySchema = z.strictObject({
+  pairs: z.array(idSchema).min(1).max(500),
+  why: lineSchema(300),
+});
 export const splitSchema = z.strictObject({ targetId: idSchema, why: lineSchema(300) });
 
 /** The value of one of the star's entries, one from elsewhere, or each survey's own again. */

@@ -41,13 +41,13 @@ export async function readExerciseRuns(
   if (ids.length === 0) return [];
   const rows = await database().query<Row>(
     `select r.id, r.number, a.id as "analysisId", a.number as "analysisNumber",
-       a.name as "analysisName", r.recipe, r.result->>'quantity' as quantity,
-       (r.result->>'credibleLevel')::float8 as "credibleLevel",
-       (r.result->'answer'->>'limit')::float8 as "limit",
-       (r.result->'answer'->>'isConstrained')::boolean as "isConstrained",
-       r.result->'statement'->>'sentence' as sentence,
-       r.result->'statement'->'conditions' as conditions
+       a.name as "analysisName", r.recipe, x.quantity, x."credibleLevel",
+       (x.answer->>'limit')::float8 as "limit",
+       (x.answer->>'isConstrained')::boolean as "isConstrained",
+       x.statement->>'sentence' as sentence, x.statement->'conditions' as conditions
      from run r join analysis a on a.id = r.analysis_id
+       cross join lateral jsonb_to_record(r.result) as x(
+         quantity text, "credibleLevel" float8, answer jsonb, statement jsonb)
      where r.collaboration_id = $1 and ${column} = any($2::uuid[]) and r.result is not null
      order by r.number desc`,
     { bind: [actor.collaborationId, ids], type: QueryTypes.SELECT, transaction },

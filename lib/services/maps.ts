@@ -62,13 +62,13 @@ export async function listSurveyMaps(actor: Actor, slug: string): Promise<Survey
       include: [{ model: CompletenessMapRow, as: 'map', attributes: ['digest', 'checksum'] }],
       order: [['foldedName', 'ASC']],
     }),
-    readMapStates(survey),
+    readMapStates([survey]),
     JobRow.findOne({
       where: { surveyId: survey.id, kind: 'compute-maps' },
       order: [['createdAt', 'DESC']],
     }),
   ]);
-  const stateOf = new Map(states.map((state) => [state.targetId, state]));
+  const stateOf = new Map(states.get(survey.id)?.map((state) => [state.targetId, state]));
   return {
     job: job && (await describeJob(job)),
     maps: targets.map((target) => {
@@ -128,9 +128,10 @@ export async function readMapStore(actor: Actor): Promise<MapStore> {
     where: { collaborationId: actor.collaborationId, ...notArchived() },
     order: [['position', 'ASC']],
   });
+  const statesOf = await readMapStates(rows);
   const surveys: MapStore['surveys'] = [];
   for (const row of rows) {
-    const states = await readMapStates(row);
+    const states = statesOf.get(row.id) ?? [];
     const count = (standing: MapState['standing']) =>
       states.filter((state) => state.standing === standing).length;
     const reasons = new Map<NonNullable<MapState['reason']>, number>();

@@ -21,12 +21,15 @@ const LOG_LENGTH = 12;
 function readHistory(analysisId: string): Promise<HistoryRun[]> {
   return database().query<HistoryRun>(
     `select finished_at as at, number as run, recipe,
-       (result->'answer'->>'limit')::float8 as "limit",
-       (result->'zero'->>'limit')::float8 as "zeroLimit",
-       (result->>'stars')::int as stars, jsonb_array_length(result->'counted') as detections,
-       inputs->'population' as population, inputs->>'cooling' as cooling,
-       inputs->>'engineVersion' as "engineVersion", inputs_digest as "inputsDigest"
-     from run where analysis_id = $1 and result is not null order by number`,
+       (x.answer->>'limit')::float8 as "limit", (x.zero->>'limit')::float8 as "zeroLimit",
+       x.stars, jsonb_array_length(x.counted) as detections, y.population, y.cooling,
+       y."engineVersion", inputs_digest as "inputsDigest"
+     from run
+       cross join lateral jsonb_to_record(result) as x(
+         stars int, answer jsonb, zero jsonb, counted jsonb)
+       left join lateral jsonb_to_record(inputs) as y(
+         population jsonb, cooling text, "engineVersion" text) on true
+     where analysis_id = $1 and result is not null order by number`,
     { bind: [analysisId], type: QueryTypes.SELECT },
   );
 }

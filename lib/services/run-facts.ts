@@ -1,7 +1,7 @@
 import { QueryTypes } from 'sequelize';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { database } from '@/models';
-import { OUTSIDE_SAMPLE } from '@/models/sample-selection';
+import { findOlderInputs } from './older-inputs';
 
 type RunFacts = Omit<RunSummary, 'job'> & { analysisId: string; jobId: string };
 
@@ -22,62 +22,24 @@ interface Row {
   detections: number | null;
   stars: number | null;
   resultDigest: string | null;
-  hasOlderInputs: boolean;
+  hasResult: boolean;
+  surveyIds: string[];
+  startedS: number;
   frozen: RunSummary['frozen'];
   withdrawn: RunSummary['withdrawn'] | null;
 }
 
-/** A target that a run of this recipe counts, apart from what its sample asks of the star. */
-const IS_COUNTED = `t.left_out_reason is null
-        and (chosen.definition->>'knownCompanion' = 'kept'
-          or t.attributes->>'selectedForCompanion' is distinct from 'true')`;
-
-/**
- * Whether the surveys have changed since a run read them: other stars, another map of a star that
- * one survey lists, a target, curve, map or companion that came later, or a file withdrawn since.
- */
-const OLDER_INPUTS = `
-  r.result is not null and (
-    exists (
-      select 1 from target t
-        left join completeness_map m on m.id = t.map_id
-        left join contrast_curve c on c.target_id = t.id
-        left join companion k on k.target_id = t.id
-      where t.survey_id = any(q.survey_ids) and t.left_out_reason is null
-        and greatest(t.created_at, m.created_at, c.created_at, c.replaced_at, k.created_at)
-          > j.started_at)
-    or exists (
-      select 1 from upload u
-      where u.survey_id = any(q.survey_ids) and u.withdrawn_at > j.started_at)
-    or exists (
-      select t.star_id from target t
-      where t.survey_id = any(q.survey_ids) and t.map_id is not null and ${IS_COUNTED}
-        and not (chosen.id is not null and exists (
-          select 1 from jsonb_to_recordset(r.inputs->'leftOut') as l(name text, survey text, reason text)
-            join survey v on v.id = t.survey_id and v.name = l.survey
-          where l.name = t.name and l.reason = '${OUTSIDE_SAMPLE}'))
-      except select star_id from run_star where run_id = r.id)
-    or exists (
-      select s.star_id from run_star s where s.run_id = r.id
-      except select t.star_id from target t
-      where t.survey_id = any(q.survey_ids) and t.map_id is not null and ${IS_COUNTED})
-    or exists (
-      select 1 from run_star s join target t
-        on t.star_id = s.star_id and t.survey_id = s.survey_ids[1]
-      where s.run_id = r.id and cardinality(s.survey_ids) = 1 and t.map_id is distinct from s.map_id))`;
-
+/** A result is some 90 kB that is unpacked at each look into it: once a run, by jsonb_to_record. */
 const FACTS = `
   select r.id, r.analysis_id as "analysisId", r.job_id as "jobId", r.number,
     p.name as "createdBy", r.created_at as "createdAt", r.finished_at as "finishedAt",
-    r.result->>'quantity' as quantity,
+    x.quantity,
     (r.recipe->>'credibleLevel')::float8 as "credibleLevel",
-    (r.result->'answer'->>'limit')::float8 as "limit",
-    (r.result->'zero'->>'limit')::float8 as "zeroLimit",
-    (r.result->'answer'->>'median')::float8 as median,
-    r.result->'answer'->'interval68' as interval68,
-    jsonb_array_length(r.result->'counted') as detections,
-    (r.result->>'stars')::int as stars, r.result_digest as "resultDigest",
-    ${OLDER_INPUTS} as "hasOlderInputs",
+    (x.answer->>'limit')::float8 as "limit", (x.zero->>'limit')::float8 as "zeroLimit",
+    (x.answer->>'median')::float8 as median, x.answer->'interval68' as interval68,
+    jsonb_array_length(x.counted) as detections, x.stars, r.result_digest as "resultDigest",
+    r.result is not null as "hasResult", q.survey_ids as "surveyIds",
+    extract(epoch from j.started_at)::float8 as "startedS",
     (select case when exists (
         select 1 from release_run q join release e on e.id = q.release_id
         where q.run_id = r.id and e.published_at is not null and e.withdrawn_at is null)
@@ -88,9 +50,10 @@ const FACTS = `
       from survey s join share x on x.id = s.share_id
       where s.id = any(q.survey_ids) and x.withdrawn_from is not null) as withdrawn
   from run r join job j on j.id = r.job_id left join person p on p.id = r.created_by
-    left join sample chosen on chosen.id = (r.recipe->>'sampleId')::uuid
     cross join lateral (
       select array(select jsonb_array_elements_text(r.recipe->'surveyIds')::uuid) as survey_ids) q
+    left join lateral jsonb_to_record(r.result) as x(
+      quantity text, stars int, answer jsonb, zero jsonb, counted jsonb) on true
   where r.analysis_id = any($1::uuid[])
   order by r.number desc`;
 
@@ -98,9 +61,11 @@ const FACTS = `
 export async function readRunFacts(analysisIds: string[]): Promise<RunFacts[]> {
   if (analysisIds.length === 0) return [];
   const rows = await database().query<Row>(FACTS, { bind: [analysisIds], type: QueryTypes.SELECT });
-  return rows.map(({ withdrawn, ...row }) => ({
+  const older = await findOlderInputs(rows.filter(({ hasResult }) => hasResult));
+  return rows.map(({ withdrawn, hasResult, surveyIds, startedS, ...row }) => ({
     ...row,
     ...(withdrawn && { withdrawn }),
+    hasOlderInputs: older.has(row.id),
     createdAt: row.createdAt.toISOString(),
     finishedAt: row.finishedAt?.toISOString() ?? null,
   }));

@@ -34,9 +34,11 @@ const ENTRIES = `
     and (s.share_id is null or not is_withdrawn(s.share_id))
   order by s.position, s.id, t.folded_name`;
 
+export type ListedStar = Pick<StarRow, 'id' | 'name' | 'gaiaDr3Id'>;
+
 /** Everything known of a collaboration's stars, or of one of them. */
 export interface Sky {
-  stars: StarRow[];
+  stars: ListedStar[];
   entriesOf: Map<string, EntryRow[]>;
   adopted: AdoptedValues;
   /** Open pairs per star. */
@@ -46,7 +48,10 @@ export interface Sky {
 
 export async function loadSky(collaborationId: string, starId?: string): Promise<Sky> {
   const [stars, rows, adopted, open] = await Promise.all([
+    // Plain rows: to dress thousands of them takes longer than to read them.
     StarRow.findAll({
+      attributes: ['id', 'name', 'gaiaDr3Id'],
+      raw: true,
       where: { collaborationId, mergedInto: null, ...(starId && { id: starId }) },
       order: [
         ['foldedName', 'ASC'],

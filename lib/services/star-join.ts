@@ -39,9 +39,15 @@ export async function refreshMaps(
   );
 }
 
-/** Both stars' roots, locked until the transaction ends. */
-export async function lockRoots(match: StarMatchRow, transaction: Transaction): Promise<StarRow[]> {
-  const { collaborationId, firstStarId, secondStarId } = match;
+/**
+ * Locks every star of a collaboration until the transaction ends.
+ *
+ * @returns the root of a star, also after further ones were joined through the rows given out here
+ */
+export async function lockStars(
+  collaborationId: string,
+  transaction: Transaction,
+): Promise<(id: string) => StarRow> {
   const stars = await StarRow.findAll({
     where: { collaborationId },
     order: [['id', 'ASC']],
@@ -49,12 +55,11 @@ export async function lockRoots(match: StarMatchRow, transaction: Transaction): 
     transaction,
   });
   const byId = new Map(stars.map((star) => [star.id, star]));
-  const rootOf = (id: string): StarRow => {
+  return function rootOf(id: string): StarRow {
     const star = byId.get(id);
     if (!star) throw new Error(`star ${id} of a pair is not there`);
     return star.mergedInto === null ? star : rootOf(star.mergedInto);
   };
-  return [rootOf(firstStarId), rootOf(secondStarId)];
 }
 
 const targetsOf = (starIds: string[], transaction: Transaction) =>
@@ -93,18 +98,22 @@ export async function refreshIfAdopted(
   }
 }
 
+export interface Joined {
+  /** What is needed to part them again. */
+  absorbedStarId: string;
+  movedTargetIds: string[];
+  survivorId: string;
+  /** Entries of both. */
+  targets: TargetRow[];
+}
+
 /**
  * Makes two stars one. The one with more entries stays, of equals the older; the other keeps its
  * row without targets.
  *
- * @returns what is needed to part them again
  * @throws Conflict where one survey lists both
  */
-export async function joinStars(
-  actor: Actor,
-  pair: StarRow[],
-  transaction: Transaction,
-): Promise<{ absorbedStarId: string; movedTargetIds: string[]; survivor: StarRow }> {
+export async function joinStars(pair: StarRow[], transaction: Transaction): Promise<Joined> {
   const targets = await targetsOf(
     pair.map(({ id }) => id),
     transaction,
@@ -123,8 +132,7 @@ export async function joinStars(
     { where: { id: movedTargetIds, starId: absorbed.id }, transaction },
   );
   await absorbed.update({ mergedInto: survivor.id }, { transaction });
-  await refreshIfAdopted(actor, [survivor.id], targets, transaction);
-  return { absorbedStarId: absorbed.id, movedTargetIds, survivor };
+  return { absorbedStarId: absorbed.id, movedTargetIds, survivorId: survivor.id, targets };
 }
 
 /** Gives the absorbed star of a confirmed pair back what it brought. */
@@ -133,7 +141,8 @@ export async function partStars(
   match: StarMatchRow,
   transaction: Transaction,
 ): Promise<void> {
-  const [root] = await lockRoots(match, transaction);
+  const rootOf = await lockStars(match.collaborationId, transaction);
+  const root = rootOf(match.firstStarId);
   const absorbed = await StarRow.findByPk(match.absorbedStarId ?? '', {
     transaction,
     rejectOnEmpty: true,

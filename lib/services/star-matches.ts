@@ -6,7 +6,7 @@ import { idSchema } from '@/lib/schemas/common';
 import type { MatchState } from '@/lib/schemas/stars';
 import { inTransaction, StarMatchRow, StarRow, TargetRow } from '@/models';
 import { recordAudit } from './audit';
-import { createStarFor, joinStars, lockRoots, partStars, refreshIfAdopted } from './star-join';
+import { createStarFor, joinStars, lockStars, partStars, refreshIfAdopted } from './star-join';
 import { pairKey, proposeMatches, rootsOf } from './star-sky';
 
 const isOpen = (state: MatchState) => state === 'proposed' || state === 'undone';
@@ -68,20 +68,65 @@ export async function proposePairs(actor: Actor): Promise<{ proposed: number }> 
   return { proposed };
 }
 
+/**
+ * Makes one star of each pair that is not yet; the maps that follow from adopted values are asked
+ * for once, at the end.
+ *
+ * @returns the pairs that were joined here
+ */
+async function joinPairs(
+  actor: Actor,
+  matches: StarMatchRow[],
+  why: string,
+  transaction: Transaction,
+): Promise<StarMatchRow[]> {
+  const rootOf = await lockStars(actor.collaborationId, transaction);
+  const survivors = new Set<string>();
+  const moved = new Map<string, TargetRow>();
+  const joined: StarMatchRow[] = [];
+  for (const match of matches) {
+    const pair = [rootOf(match.firstStarId), rootOf(match.secondStarId)];
+    if (match.state === 'confirmed' || pair[0].id === pair[1].id) continue;
+    const { absorbedStarId, movedTargetIds, survivorId, targets } = await joinStars(
+      pair,
+      transaction,
+    );
+    const fields = { state: 'confirmed' as const, absorbedStarId, movedTargetIds };
+    await decide(actor, match, fields, why, transaction);
+    await record(actor, match, 'took {pair} for one star', transaction);
+    survivors.add(survivorId);
+    for (const target of targets) moved.set(target.id, target);
+    joined.push(match);
+  }
+  await refreshIfAdopted(actor, [...survivors], [...moved.values()], transaction);
+  return joined;
+}
+
 /** The two stars of a pair become one. */
 export async function confirmMatch(actor: Actor, id: string, why: string): Promise<void> {
   demand(actor, 'combine');
   await inTransaction(async (transaction) => {
     const match = await lockMatch(actor, id, transaction);
     if (match.state === 'confirmed') return;
-    const pair = await lockRoots(match, transaction);
-    if (pair[0].id === pair[1].id) {
+    const joined = await joinPairs(actor, [match], why, transaction);
+    if (joined.length === 0) {
       throw new Conflict('These two are one star already, by another pair');
     }
-    const { absorbedStarId, movedTargetIds } = await joinStars(actor, pair, transaction);
-    const fields = { state: 'confirmed' as const, absorbedStarId, movedTargetIds };
-    await decide(actor, match, fields, why, transaction);
-    await record(actor, match, 'took {pair} for one star', transaction);
+  });
+}
+
+/**
+ * The stars of each pair become one: of all pairs or, where one cannot be joined, of none. Pairs
+ * that another one of them makes one are left as they are.
+ */
+export async function confirmMatches(actor: Actor, ids: string[], why: string): Promise<void> {
+  demand(actor, 'combine');
+  await inTransaction(async (transaction) => {
+    // In one order, so that two people who confirm the same pairs do not wait in a circle.
+    const matches: StarMatchRow[] = [];
+    for (const id of [...new Set(ids)].sort())
+      matches.push(await lockMatch(actor, id, transaction));
+    await joinPairs(actor, matches, why, transaction);
   });
 }
 

@@ -3,11 +3,13 @@ import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { MATCH_ARCSEC, MATCH_DISTANCE_RATIO } from '@/lib/quantities/sky-match';
 import type { MatchEvidence, Overlaps, StarMatchView } from '@/lib/schemas/stars';
-import { database, PersonRow, StarMatchRow, StarRow, SurveyRow, TargetRow } from '@/models';
+import { database, PersonRow, StarMatchRow, type StarRow, SurveyRow, TargetRow } from '@/models';
 import { pairKey, rootsOf, skyEntryOf } from './star-sky';
 
 /** Doubt of a pair whose distances cannot be compared. */
 const UNKNOWN_DISTANCE = 0.6;
+/** Within 1″ and 2 % in distance: a fifth of what the rule allows. */
+const PLAIN_DOUBT = 0.2;
 
 /** How near to the edge of the rule a pair lies, 0 to 1: an order for reading, not a probability. */
 function doubtOf({ by, separationArcsec, distanceRatio }: MatchEvidence): number {
@@ -17,9 +19,11 @@ function doubtOf({ by, separationArcsec, distanceRatio }: MatchEvidence): number
   return Math.max((separationArcsec ?? 0) / MATCH_ARCSEC, ofDistance);
 }
 
+type NamedStar = Pick<StarRow, 'id' | 'name' | 'mergedInto'>;
+
 interface Context {
   rootOf(id: string): string;
-  starOf: Map<string, StarRow>;
+  starOf: Map<string, NamedStar>;
   surveyOf: Map<string, SurveyRow>;
   targetsOf: Map<string, TargetRow[]>;
   personOf: Map<string, string>;
@@ -43,7 +47,7 @@ function isUnder({ starOf }: Context, starId: string, ancestorId: string): boole
   return false;
 }
 
-function describeMatch(match: StarMatchRow, context: Context): StarMatchView {
+function describeMatch(match: StarMatchRow, context: Context): Omit<StarMatchView, 'isPlain'> {
   const sideOf = (starId: string): StarMatchView['stars'][number] => {
     const shown = match.absorbedStarId === null ? context.rootOf(starId) : starId;
     return {
@@ -83,8 +87,21 @@ function describeMatch(match: StarMatchRow, context: Context): StarMatchView {
   };
 }
 
+/** Stars, and those that they were joined to on the way to their roots. */
+function readChains(starIds: string[]): Promise<NamedStar[]> {
+  return database().query<NamedStar>(
+    `with recursive chain as (
+       select id, name, merged_into from star where id = any($1::uuid[])
+       union select s.id, s.name, s.merged_into from star s join chain on s.id = chain.merged_into)
+     select id, name, merged_into as "mergedInto" from chain`,
+    { bind: [starIds], type: QueryTypes.SELECT },
+  );
+}
+
 async function loadContext(collaborationId: string, matches: StarMatchRow[]): Promise<Context> {
-  const stars = await StarRow.findAll({ where: { collaborationId } });
+  const stars = await readChains(
+    matches.flatMap(({ firstStarId, secondStarId }) => [firstStarId, secondStarId]),
+  );
   const roots = rootsOf(stars);
   const rootOf = (id: string) => roots.get(id) ?? id;
   const concerned = new Set(
@@ -116,10 +133,34 @@ async function loadContext(collaborationId: string, matches: StarMatchRow[]): Pr
 
 const isOpen = ({ state }: StarMatchRow) => state === 'proposed' || state === 'undone';
 
+/** Open pairs that a person may take together: sure, and no star of theirs waits in another pair. */
+function markPlain(open: Omit<StarMatchView, 'isPlain'>[]): StarMatchView[] {
+  const pairsOf = new Map<string, number>();
+  const ids = open.flatMap(({ stars }) => stars.map(({ id }) => id));
+  for (const id of ids) pairsOf.set(id, (pairsOf.get(id) ?? 0) + 1);
+  return open.map((pair) => {
+    const isOnly = pair.stars.every(({ id }) => pairsOf.get(id) === 1);
+    return { ...pair, isPlain: isOnly && pair.doubt <= PLAIN_DOUBT };
+  });
+}
+
+/** Pairs of a star, or of one that was joined to it. */
+async function pairsOfStar({ collaborationId }: Actor, starId: string): Promise<string[]> {
+  const rows = await database().query<{ id: string }>(
+    `select m.id from star_match m where m.collaboration_id = $1 and (
+       m.first_star_id in (select joined_stars($2)) or m.second_star_id in (select joined_stars($2)))`,
+    { bind: [collaborationId, starId], type: QueryTypes.SELECT },
+  );
+  return rows.map(({ id }) => id);
+}
+
 /** Pairs to decide, surest first, each two stars once; and what was decided, newest first. */
-async function readMatches(actor: Actor) {
+async function readMatches(actor: Actor, starId?: string) {
   const rows = await StarMatchRow.findAll({
-    where: { collaborationId: actor.collaborationId },
+    where: {
+      collaborationId: actor.collaborationId,
+      ...(starId !== undefined && { id: await pairsOfStar(actor, starId) }),
+    },
     order: [
       ['decidedAt', 'DESC NULLS LAST'],
       ['id', 'ASC'],
@@ -134,16 +175,17 @@ async function readMatches(actor: Actor) {
     if (!isOne && !open.has(keyOf(row))) open.set(keyOf(row), row);
   }
   const describe = (row: StarMatchRow) => describeMatch(row, context);
+  const decided = rows.filter((row) => !isOpen(row)).map(describe);
   return {
-    open: [...open.values()].map(describe).sort((a, b) => a.doubt - b.doubt),
-    decided: rows.filter((row) => !isOpen(row)).map(describe),
+    open: markPlain([...open.values()].map(describe).sort((a, b) => a.doubt - b.doubt)),
+    decided: decided.map((pair) => ({ ...pair, isPlain: false })),
   };
 }
 
 /** Every pair that concerns one star, open ones first. */
 export async function matchesOf(actor: Actor, starId: string): Promise<StarMatchView[]> {
-  const { open, decided } = await readMatches(actor);
-  return [...open, ...decided].filter(({ stars }) => stars.some(({ id }) => id === starId));
+  const { open, decided } = await readMatches(actor, starId);
+  return [...open, ...decided];
 }
 
 export async function listOverlaps(actor: Actor): Promise<Overlaps> {

@@ -14,6 +14,7 @@ import {
   distanceOf,
   type EntryRow,
   heldValue,
+  type ListedStar,
   loadSky,
   type Sky,
 } from './star-facts';
@@ -21,7 +22,7 @@ import { matchesOf } from './star-overlaps';
 import { currentYardstick, gridOfSettings, summariseMaps } from './survey-depth';
 import { companionView } from './targets';
 
-const foldedNames = (star: StarRow, entries: EntryRow[]) =>
+const foldedNames = (star: ListedStar, entries: EntryRow[]) =>
   [star.name, ...entries.flatMap(({ name, otherNames }) => [name, ...otherNames])].map(foldName);
 
 /** Detection probabilities of maps under the yardstick, survey by survey on its grid. */
@@ -46,7 +47,7 @@ async function probabilitiesOf(
 }
 
 function describeStar(
-  star: StarRow,
+  star: ListedStar,
   sky: Sky,
   probabilities: ReadonlyMap<string, number>,
 ): StarView {
@@ -98,7 +99,7 @@ function describeStar(
 }
 
 /** A conflict is open until one value was adopted. */
-function openConflicts(star: StarRow, sky: Sky) {
+function openConflicts(star: ListedStar, sky: Sky) {
   const { age, distance } = conflictsOf(sky.entriesOf.get(star.id) ?? []);
   return {
     age: age !== null && !sky.adopted.age.has(star.id),
@@ -106,7 +107,7 @@ function openConflicts(star: StarRow, sky: Sky) {
   };
 }
 
-function isAsked(star: StarRow, sky: Sky, { q, survey, only }: StarQuery): boolean {
+function isAsked(star: ListedStar, sky: Sky, { q, survey, only }: StarQuery): boolean {
   const entries = sky.entriesOf.get(star.id) ?? [];
   if (survey && !entries.some(({ slug }) => slug === survey)) return false;
   if (q) {
@@ -176,11 +177,14 @@ function analysesOf(starId: string): Promise<StarPage['analyses']> {
     `select 'A-' || a.number as key, a.name, used.number as run, used.probability,
        used.probability / nullif(used.total, 0) as share
      from (
-       select distinct on (r.analysis_id) r.analysis_id, r.number,
-         s.mean_completeness as probability,
-         (select sum(o.mean_completeness) from run_star o where o.run_id = r.id) as total
-       from run r join run_star s on s.run_id = r.id
-       where root_of_star(s.star_id) = $1 order by r.analysis_id, r.number desc) used
+       select newest.*,
+         (select sum(o.mean_completeness) from run_star o where o.run_id = newest.id) as total
+       from (
+         select distinct on (r.analysis_id) r.id, r.analysis_id, r.number,
+           s.mean_completeness as probability
+         from run r join run_star s on s.run_id = r.id
+         where s.star_id in (select joined_stars($1))
+         order by r.analysis_id, r.number desc) newest) used
      join analysis a on a.id = used.analysis_id
      order by a.number`,
     { bind: [starId], type: QueryTypes.SELECT },
@@ -195,7 +199,7 @@ async function combinedOf(starId: string): Promise<StarPage['combined']> {
          where v.id = any(s.survey_ids)) as surveys
      from run_star s join run r on r.id = s.run_id join analysis a on a.id = r.analysis_id
        join completeness_map m on m.id = s.map_id
-     where root_of_star(s.star_id) = $1 and cardinality(s.survey_ids) > 1
+     where s.star_id in (select joined_stars($1)) and cardinality(s.survey_ids) > 1
      order by r.finished_at desc limit 1`,
     { bind: [starId], type: QueryTypes.SELECT },
   );

@@ -1,21 +1,21 @@
-import { Op, QueryTypes, UniqueConstraintError } from 'sequelize';
+import { QueryTypes, UniqueConstraintError } from 'sequelize';
 import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
 import { Conflict, NotFound } from '@/lib/errors';
-import { logSpacedAxis } from '@/lib/numerics/grid';
 import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
 import type {
   createSurveySchema,
+  MapSettings,
   SurveyList,
   SurveyView,
   updateSurveySchema,
 } from '@/lib/schemas/surveys';
-import { database, inTransaction, JobRow, PersonRow, SurveyRow, TargetRow } from '@/models';
+import { database, inTransaction, SurveyRow } from '@/models';
 import { recordAudit } from './audit';
-import { describeJob } from './jobs';
 import { describeShared, refuseShared } from './sharing/shared-surveys';
-import { currentYardstick, summariseMaps } from './survey-depth';
+import { gridOfSettings, summariseMaps, type Yardstick } from './survey-depth';
+import { readSurveyFacts, type SurveyFacts } from './survey-facts';
 
 /** A survey's short name for addresses: "Halyard II" → "halyard-ii". */
 export function slugOf(name: string): string {
@@ -38,43 +38,6 @@ export async function findSurvey(actor: Actor, slug: string): Promise<SurveyRow>
   return row;
 }
 
-interface Counts {
-  survey_id: string;
-  targets: string;
-  shared: string;
-  curves: string;
-  none: string;
-  waiting: string;
-  ready: string;
-  failed: string;
-  confirmed: string;
-  candidate: string;
-  ambiguous: string;
-  background: string;
-}
-
-async function countTargets(collaborationId: string): Promise<Map<string, Counts>> {
-  const rows = await database().query<Counts>(
-    `select t.survey_id,
-       count(*) as targets,
-       count(*) filter (where exists (
-         select 1 from target o where o.star_id = t.star_id and o.survey_id <> t.survey_id)) as shared,
-       count(*) filter (where t.map_state = 'none') as none,
-       count(*) filter (where t.map_state = 'waiting') as waiting,
-       count(*) filter (where t.map_state = 'ready') as ready,
-       count(*) filter (where t.map_state = 'failed') as failed,
-       coalesce(sum((select count(*) from contrast_curve c
-         where c.target_id = t.id and c.replaced_at is null)), 0) as curves,
-       coalesce(sum((select count(*) from companion c where c.target_id = t.id and c.status = 'confirmed')), 0) as confirmed,
-       coalesce(sum((select count(*) from companion c where c.target_id = t.id and c.status = 'candidate')), 0) as candidate,
-       coalesce(sum((select count(*) from companion c where c.target_id = t.id and c.status = 'ambiguous')), 0) as ambiguous,
-       coalesce(sum((select count(*) from companion c where c.target_id = t.id and c.status = 'background')), 0) as background
-     from target t where t.collaboration_id = $1 group by t.survey_id`,
-    { bind: [collaborationId], type: QueryTypes.SELECT },
-  );
-  return new Map(rows.map((row) => [row.survey_id, row]));
-}
-
 /** The stars of each set of surveys, largest first, and the counts of stars and entries. */
 async function countOverlaps(collaborationId: string) {
   const sets = await database().query<{ surveys: string[]; stars: string }>(
@@ -94,19 +57,9 @@ async function countOverlaps(collaborationId: string) {
   };
 }
 
-async function sensitivityOf(row: SurveyRow) {
-  const targets = await TargetRow.findAll({
-    attributes: ['mapId'],
-    where: { surveyId: row.id, mapState: 'ready', leftOutReason: null, mapId: { [Op.ne]: null } },
-  });
-  if (targets.length === 0) return { depth: null, summedCompleteness: null };
-  const { massMjup: mass, semiMajorAxisAu: axis } = row.mapSettings;
-  const grid = {
-    massMjup: logSpacedAxis(mass.min, mass.max, mass.count),
-    semiMajorAxisAu: logSpacedAxis(axis.min, axis.max, axis.count),
-  };
-  const yardstick = await currentYardstick(row.collaborationId);
-  const ids = targets.map((target) => target.mapId as string);
+async function sensitivityOf(row: SurveyRow, ids: string[], yardstick: Yardstick) {
+  if (ids.length === 0) return { depth: null, summedCompleteness: null };
+  const grid = gridOfSettings(row.mapSettings as MapSettings);
   const summaries = await summariseMaps(row.collaborationId, ids, yardstick, grid);
   const stars = new Float64Array(grid.semiMajorAxisAu.length);
   let summed = 0;
@@ -127,19 +80,16 @@ async function sensitivityOf(row: SurveyRow) {
 async function describeSurvey(
   actor: Actor,
   row: SurveyRow,
-  counts: Counts | undefined,
+  facts: SurveyFacts,
   look = { forNewer: false },
 ): Promise<SurveyView> {
-  const [lead, job, sensitivity, shared] = await Promise.all([
-    row.leadId ? PersonRow.findByPk(row.leadId) : null,
-    JobRow.findOne({
-      where: { surveyId: row.id, kind: 'compute-maps' },
-      order: [['createdAt', 'DESC']],
-    }),
-    sensitivityOf(row),
-    describeShared(actor, row, look),
+  const counts = facts.countsOf.get(row.id);
+  const share = row.shareId === null ? undefined : facts.shareOf.get(row.shareId);
+  const [sensitivity, shared] = await Promise.all([
+    sensitivityOf(row, counts?.mapIds ?? [], facts.yardstick),
+    share && describeShared(actor, share, look),
   ]);
-  const lookup = (key: keyof Counts) => Number(counts?.[key] ?? 0);
+  const lead = row.leadId === null ? undefined : facts.leadOf.get(row.leadId);
   const item = { isLead: isLead(actor, row) };
   const isOwn = row.shareId === null;
   return {
@@ -150,28 +100,28 @@ async function describeSurvey(
     description: row.description,
     observedFrom: row.observedFrom,
     observedTo: row.observedTo,
-    lead: lead && { id: lead.id, name: lead.name },
+    lead: lead ? { id: lead.id, name: lead.name } : null,
     position: row.position,
     isArchived: row.archivedAt !== null && row.archivedAt <= new Date(),
     // Settings stored earlier lack the rules that came later.
     mapSettings: mapSettingsSchema.parse(row.mapSettings),
-    targets: lookup('targets'),
-    alsoInAnother: lookup('shared'),
-    curves: lookup('curves'),
+    targets: counts?.targets ?? 0,
+    alsoInAnother: counts?.shared ?? 0,
+    curves: counts?.curves ?? 0,
     maps: {
-      ready: lookup('ready'),
-      waiting: lookup('waiting'),
-      failed: lookup('failed'),
-      none: lookup('none'),
+      ready: counts?.ready ?? 0,
+      waiting: counts?.waiting ?? 0,
+      failed: counts?.failed ?? 0,
+      none: counts?.none ?? 0,
     },
     companions: {
-      confirmed: lookup('confirmed'),
-      candidate: lookup('candidate'),
-      ambiguous: lookup('ambiguous'),
-      background: lookup('background'),
+      confirmed: counts?.confirmed ?? 0,
+      candidate: counts?.candidate ?? 0,
+      ambiguous: counts?.ambiguous ?? 0,
+      background: counts?.background ?? 0,
     },
     ...sensitivity,
-    mapJob: job && (await describeJob(job)),
+    mapJob: facts.jobOf.get(row.id) ?? null,
     can: {
       change: isOwn && may(actor, 'change-survey', item),
       import: isOwn && may(actor, 'import', item),
@@ -192,19 +142,18 @@ export async function listSurveys(actor: Actor): Promise<SurveyList> {
       ['position', 'ASC'],
     ],
   });
-  const [counts, overlaps] = await Promise.all([
-    countTargets(actor.collaborationId),
+  const [facts, overlaps] = await Promise.all([
+    readSurveyFacts(actor.collaborationId, rows),
     countOverlaps(actor.collaborationId),
   ]);
-  const surveys: SurveyView[] = [];
-  for (const row of rows) surveys.push(await describeSurvey(actor, row, counts.get(row.id)));
+  const surveys = await Promise.all(rows.map((row) => describeSurvey(actor, row, facts)));
   return { surveys, ...overlaps };
 }
 
 export async function getSurvey(actor: Actor, slug: string): Promise<SurveyView> {
   const row = await findSurvey(actor, slug);
-  const counts = await countTargets(actor.collaborationId);
-  return describeSurvey(actor, row, counts.get(row.id), { forNewer: true });
+  const facts = await readSurveyFacts(actor.collaborationId, [row]);
+  return describeSurvey(actor, row, facts, { forNewer: true });
 }
 
 /** Only members lead surveys. */

@@ -257,6 +257,9 @@ export const routePermissions: Record<string, RoutePermission> = {
   }),
   'get /stars/overlaps': read(),
   'post /stars/overlaps': combine(),
+  'post /stars/overlaps/confirm': combine({
+    body: ({ pair }) => ({ pairs: [pair], why: 'They said so' }),
+  }),
   'post /stars/overlaps/{pair}/confirm': combine(why),
   'post /stars/overlaps/{pair}/refuse': combine(why),
   'post /stars/overlaps/{pair}/undo': combine(why),

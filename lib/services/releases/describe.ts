@@ -23,13 +23,15 @@ import { needsTwoPeople } from '../settings';
 
 const RUNS = `
   select q.release_id as "releaseId", r.id, r.number, 'A-' || a.number as "analysisKey",
-    a.name as "analysisName", r.result->'statement'->>'sentence' as sentence,
-    (r.result->'answer'->>'limit')::float8 as "limit",
-    (r.recipe->>'credibleLevel')::float8 as "credibleLevel", r.result->>'quantity' as quantity,
+    a.name as "analysisName", x.statement->>'sentence' as sentence,
+    (x.answer->>'limit')::float8 as "limit",
+    (r.recipe->>'credibleLevel')::float8 as "credibleLevel", x.quantity,
     f.frozen_by_name as "frozenBy", f.frozen_at as "frozenAt",
     r.inputs_digest as "inputsDigest", r.result_digest as "resultDigest"
   from release_run q join run r on r.id = q.run_id join analysis a on a.id = r.analysis_id
     join frozen_run f on f.run_id = r.id
+    left join lateral jsonb_to_record(r.result) as x(
+      quantity text, answer jsonb, statement jsonb) on true
   where q.release_id = any($1::uuid[]) order by q.position`;
 
 /** The runs of releases, in their order. */

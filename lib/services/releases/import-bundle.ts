@@ -218,35 +218,42 @@ export async function listImports(actor: Actor): Promise<{ imports: BundleImport
     order: [['createdAt', 'DESC']],
     limit: 50,
   });
-  const imports: BundleImportView[] = [];
-  for (const row of rows) {
-    const run = await RunRow.findByPk(row.runId, { rejectOnEmpty: true });
-    const [analysis, job, person] = await Promise.all([
-      AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true }),
-      JobRow.findByPk(run.jobId, { rejectOnEmpty: true }),
-      row.importedBy ? PersonRow.findByPk(row.importedBy) : null,
-    ]);
+  const runs = await RunRow.findAll({ where: { id: rows.map(({ runId }) => runId) } });
+  const [analyses, jobs, people] = await Promise.all([
+    AnalysisRow.findAll({ where: { id: runs.map(({ analysisId }) => analysisId) } }),
+    JobRow.findAll({ where: { id: runs.map(({ jobId }) => jobId) } }),
+    PersonRow.findAll({ where: { id: rows.flatMap(({ importedBy }) => importedBy ?? []) } }),
+  ]);
+  const imports = rows.flatMap((row): BundleImportView[] => {
+    const run = runs.find(({ id }) => id === row.runId);
+    const analysis = analyses.find(({ id }) => id === run?.analysisId);
+    const job = jobs.find(({ id }) => id === run?.jobId);
+    // Deleted between the statements.
+    if (!run || !analysis || !job) return [];
+    const person = people.find(({ id }) => id === row.importedBy);
     const digests = run.result ? portableDigests(run) : null;
-    imports.push({
-      id: row.id,
-      title: row.title,
-      fileSha256: row.fileSha256,
-      analysisKey: `A-${analysis.number}`,
-      run: { id: run.id, number: run.number },
-      status: job.status,
-      fault: job.fault,
-      agreement:
-        digests && run.result
-          ? {
-              isSameInputs: digests.portableInputs === row.expected.portableInputs,
-              isSameResult: digests.portableResult === row.expected.portableResult,
-              limit: run.result.answer.limit,
-              expectedLimit: row.expected.limit,
-            }
-          : null,
-      importedBy: person?.name ?? null,
-      createdAt: row.createdAt.toISOString(),
-    });
-  }
+    return [
+      {
+        id: row.id,
+        title: row.title,
+        fileSha256: row.fileSha256,
+        analysisKey: `A-${analysis.number}`,
+        run: { id: run.id, number: run.number },
+        status: job.status,
+        fault: job.fault,
+        agreement:
+          digests && run.result
+            ? {
+                isSameInputs: digests.portableInputs === row.expected.portableInputs,
+                isSameResult: digests.portableResult === row.expected.portableResult,
+                limit: run.result.answer.limit,
+                expectedLimit: row.expected.limit,
+              }
+            : null,
+        importedBy: person?.name ?? null,
+        createdAt: row.createdAt.toISOString(),
+      },
+    ];
+  });
   return { imports };
 }

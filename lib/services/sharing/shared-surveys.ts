@@ -30,11 +30,10 @@ async function hasNewer(share: ShareRow): Promise<boolean> {
 /** How a survey came here, where another collaboration owns it. */
 export async function describeShared(
   actor: Actor,
-  survey: SurveyRow,
+  share: ShareRow,
   look: { forNewer: boolean },
 ): Promise<SharedFrom | undefined> {
-  const share = survey.shareId === null ? null : await ShareRow.findByPk(survey.shareId);
-  if (!share?.sourceVersion || !share.copiedAt) return undefined;
+  if (!share.sourceVersion || !share.copiedAt) return undefined;
   const isOver = share.state !== 'accepted';
   const isNewer = look.forNewer && !isOver ? await hasNewer(share) : null;
   return {
