@@ -88,19 +88,26 @@ async function measureRows(/** @type {Row[]} */ rows, product, isJson) {
   return results;
 }
 
-function pickRows(/** @type {Row[]} */ rows, /** @type {string[]} */ names) {
+/** The rows that are named, or all; those behind `--without` are left out. */
+function pickRows(/** @type {Row[]} */ rows, /** @type {string[]} */ words) {
   const known = rows.map(({ name }) => name);
-  const unknown = names.find((name) => !known.includes(name));
+  const at = words.includes('--without') ? words.indexOf('--without') : words.length;
+  const [names, without] = [words.slice(0, at), words.slice(at + 1)];
+  const unknown = [...names, ...without].find((name) => !known.includes(name));
   if (unknown !== undefined) {
     throw new LauncherProblem(`There is no row "${unknown}"; the rows are ${known.join(', ')}.`);
   }
-  return names.length === 0 ? rows : rows.filter(({ name }) => names.includes(name));
+  const picked = rows.filter(
+    ({ name }) => (names.length === 0 || names.includes(name)) && !without.includes(name),
+  );
+  return picked.sort((a, b) => Number(b.isFirst ?? false) - Number(a.isFirst ?? false));
 }
 
 runCommand(async () => {
   const words = process.argv.slice(2);
   const isJson = words.includes('--json');
-  const wrong = words.find((word) => word.startsWith('--') && word !== '--json');
+  const options = ['--json', '--without'];
+  const wrong = words.find((word) => word.startsWith('--') && !options.includes(word));
   if (wrong !== undefined) throw new LauncherProblem(`There is no option "${wrong}"`);
   const lock = await holdExclusively(`harden-${folderDigest(dataFolder())}`, () =>
     String(process.pid),
@@ -112,9 +119,11 @@ runCommand(async () => {
   // Rows read files on the product's own threads, whose code lies with the bundles of this run.
   process.env.RAREBOUND_BUNDLE_DIR = bundleFolder;
   process.env.DATABASE_URL ??= 'postgres://of-no-row';
+  // So that rows can ask as people at different addresses.
+  process.env.RAREBOUND_BEHIND_PROXY = 'yes';
   const rows = pickRows(
     await loadRows(),
-    words.filter((word) => !word.startsWith('--')),
+    words.filter((word) => word !== '--json'),
   );
   const product = new HardenProduct({ bundleFolder, say: note });
   const interrupted = new Promise((resolve) => {

@@ -1,7 +1,7 @@
-import { existsSync, readFileSync } from 'node:fs';
-import path from 'node:path';
+import { existsSync } from 'node:fs';
 import { type Browser, chromium, type Page } from '@playwright/test';
 import type { RunningProduct } from './row';
+import { signInOf } from './visitor';
 
 const EXECUTABLE = '/usr/bin/chromium';
 const PATIENCE_MS = 120_000;
@@ -12,12 +12,7 @@ export async function openLaboratory(
   role: string,
 ): Promise<{ browser: Browser; page: Page; faults: string[] }> {
   if (!existsSync(EXECUTABLE)) throw new Error(`${EXECUTABLE} is missing; this row needs it`);
-  const file = path.join(product.folder, 'demo-sign-ins.json');
-  const all: { role: string; email: string; password: string }[] = JSON.parse(
-    readFileSync(file, 'utf8'),
-  );
-  const person = all.find((one) => one.role === role);
-  if (!person) throw new Error(`the seed wrote no sign-in of a ${role}`);
+  const person = signInOf(product, role);
   const browser = await chromium.launch({
     executablePath: EXECUTABLE,
     args: ['--no-sandbox', '--disable-gpu', '--disable-background-networking', '--disable-sync'],
@@ -48,7 +43,8 @@ export async function dropFile(page: Page, name: string, text: string): Promise<
     },
     [name, text],
   );
-  const zone = page.getByText(/^Drop files of/).first();
+  // Its words change while something hangs over it; its name does not.
+  const zone = page.getByLabel(/^Drop files of/);
   for (const type of ['dragenter', 'dragover', 'drop']) {
     await zone.dispatchEvent(type, { dataTransfer: carried });
   }

@@ -27,7 +27,7 @@ export interface InventedSurvey {
 const range = (from: number, to: number) => Array.from({ length: to - from }, (_, i) => from + i);
 
 /** Pairs that only the place on the sky gives away, to be confirmed by a person. */
-const BY_POSITION = 12;
+const BY_POSITION = 50;
 
 /**
  * Three surveys of 500, 400 and 300 targets with 1000 distinct stars: 200 entries are of stars that

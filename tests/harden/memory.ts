@@ -1,4 +1,4 @@
-import { readdirSync, readFileSync } from 'node:fs';
+import { readdirSync, readFileSync, readlinkSync } from 'node:fs';
 
 const EVERY_MS = 50;
 
@@ -28,6 +28,31 @@ function groupOf(leader: number): string[] {
     .filter((pid) => Number(fieldsOf(pid)?.[2]) === leader);
 }
 
+/** Resident memory of a service and of whatever it has started, at this moment [MiB]. */
+export const residentOf = (leader: number): number =>
+  groupOf(leader).reduce((sum, pid) => sum + residentMb(pid), 0);
+
+function socketsOf(pid: string): number {
+  try {
+    const folder = `/proc/${pid}/fd`;
+    return readdirSync(folder).filter((fd) => isSocket(`${folder}/${fd}`)).length;
+  } catch {
+    return 0;
+  }
+}
+
+function isSocket(descriptor: string): boolean {
+  try {
+    return readlinkSync(descriptor).startsWith('socket:');
+  } catch {
+    return false;
+  }
+}
+
+/** Sockets that a service and whatever it has started hold open at this moment. */
+export const openSockets = (leader: number): number =>
+  groupOf(leader).reduce((sum, pid) => sum + socketsOf(pid), 0);
+
 export interface MemoryWatch {
   /** Resident memory when the watch began [MiB]. */
   startMb: number;
@@ -37,7 +62,7 @@ export interface MemoryWatch {
 
 /** Watches the resident memory of a service and of whatever it has started. */
 export function watchMemory(leader: number): MemoryWatch {
-  const now = () => groupOf(leader).reduce((sum, pid) => sum + residentMb(pid), 0);
+  const now = () => residentOf(leader);
   const startMb = now();
   let mostMb = startMb;
   const timer = setInterval(() => {

@@ -67,5 +67,7 @@ export interface Row {
   name: string;
   what: string;
   goal: string;
+  /** Measured on the demonstration as it is, before rows that add to it. */
+  isFirst?: boolean;
   measure(bench: Bench): Promise<Measured>;
 }

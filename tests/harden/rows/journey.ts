@@ -46,17 +46,26 @@ async function waitForMaps(page: Page, { slug, entries }: InventedSurvey): Promi
     .waitFor();
 }
 
-/** Takes every open pair for one star; the list has one card less each time. */
+const REASON = 'Same place, motion and distance';
+
+/** Takes the plain pairs for one star together, and the others one by one. */
 async function confirmPairs(page: Page): Promise<number> {
   await page.goto(`${LAB}/stars/overlaps`);
+  await page.getByRole('button', { name: /^Decide \d+ plain pairs$/ }).click();
+  const plain = page.getByRole('dialog');
+  const boxes = plain.getByRole('checkbox');
+  await boxes.first().waitFor();
+  let confirmed = await boxes.filter({ visible: true }).count();
+  await plain.getByLabel('Reason').fill(REASON);
+  await plain.getByRole('button', { name: `Join ${confirmed} pairs` }).click();
+  await plain.waitFor({ state: 'hidden' });
+  await page.getByText(`${confirmed} pairs joined`).first().waitFor();
   const cards = page.getByRole('listitem').filter({ hasText: 'SKUA' });
   const waiting = cards.getByRole('button', { name: 'One star', exact: true });
-  await waiting.first().waitFor();
-  let confirmed = 0;
   for (let left = await waiting.count(); left > 0; left--) {
     await waiting.first().click();
     const dialog = page.getByRole('dialog');
-    await dialog.getByLabel('Reason').fill('Same place, motion and distance');
+    await dialog.getByLabel('Reason').fill(REASON);
     await dialog.getByRole('button', { name: 'One star' }).click();
     await dialog.waitFor({ state: 'hidden' });
     await waiting.nth(left - 1).waitFor({ state: 'hidden' });
@@ -66,12 +75,14 @@ async function confirmPairs(page: Page): Promise<number> {
 }
 
 /** @returns how many stars the page counts in so many entries */
-async function combine(page: Page, entries: number): Promise<number> {
+async function combine(page: Page, surveys: InventedSurvey[], entries: number): Promise<number> {
+  const answer = await page.request.get(`/api/v1/collaborations${LAB}/surveys`);
+  const all: string[] = (await answer.json()).surveys.map(({ name }: { name: string }) => name);
   await page.goto(`${LAB}/surveys/combine`);
   await page.getByRole('heading', { name: 'Combine surveys' }).waitFor();
   const boxes = page.getByRole('group', { name: /Surveys, in order/ });
-  for (const demo of ['SANDBAR', 'HALYARD', 'PETREL', 'CURLEW']) {
-    await boxes.getByRole('checkbox', { name: demo }).uncheck();
+  for (const other of all.filter((name) => !surveys.some((own) => own.name === name))) {
+    await boxes.getByRole('checkbox', { name: other }).uncheck();
   }
   await page.getByLabel('Name', { exact: true }).fill('Invented sky');
   const figures = page.locator('dl dd');
@@ -114,7 +125,7 @@ async function measure({ product, say, folder }: Bench): Promise<Measured> {
       await stages.time(`maps ${survey.name}`, () => waitForMaps(page, survey));
     }
     const confirmed = await stages.time('match', () => confirmPairs(page));
-    const combined = await stages.time('combine', () => combine(page, entries));
+    const combined = await stages.time('combine', () => combine(page, surveys, entries));
     const limit = await stages.time('analyse', () => analyse(page));
     const plate = (await page.locator('#statement').textContent()) ?? '';
     const counted = Number(/(\d[\d\s,\u202f\u2009]*) stars/.exec(plate)?.[1].replace(/\D/g, ''));
