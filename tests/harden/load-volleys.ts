@@ -8,13 +8,19 @@ export interface Shot extends Volley {
   route: string;
 }
 
-/** One answer before the counting starts: the code is loaded, and what is not there is named. */
-async function warmUp(address: string, cookie: string): Promise<void> {
+/**
+ * A few answers before the counting starts, so that the code is loaded.
+ *
+ * @returns whether it is an address that answers by itself; false where it leads to another one
+ */
+async function warmUp(address: string, cookie: string): Promise<boolean> {
   for (let i = 0; i < 3; i++) {
     const answer = await fetch(address, { headers: { cookie }, redirect: 'manual' });
     await answer.arrayBuffer();
+    if (answer.status >= 300 && answer.status < 400) return false;
     if (answer.status !== 200) throw new Error(`${address} answers ${answer.status}`);
   }
+  return true;
 }
 
 /** Fires at one address after the other, and says what each answered. */
@@ -28,7 +34,10 @@ export async function fireAt(
   const shots: Shot[] = [];
   for (const route of routes) {
     const address = product.address + route;
-    await warmUp(address, cookie);
+    if (!(await warmUp(address, cookie))) {
+      say(`${route} leads elsewhere`);
+      continue;
+    }
     const volley = await fire(root, {
       address,
       cookie,
