@@ -14,21 +14,20 @@ interface Run {
   job: Job;
 }
 
-/** Calibrations that compute for longer than anybody measures; each has a stream of its own. */
+const isOpen = ({ status }: Job) => status === 'waiting' || status === 'running';
+
+/** Calibrations as large as they may be; each has a stream of its own. */
 export class LongJobs {
-  readonly ids: string[] = [];
+  ids: string[] = [];
+  private runId: string | undefined;
+  private seed = Date.now();
 
   constructor(private readonly api: Api) {}
 
-  async start(count: number): Promise<void> {
-    const { analyses } = await this.api.read<{ analyses: { runs: Run[] }[] }>('analyses');
-    const ended = analyses.flatMap(({ runs }) => runs).filter(({ job }) => job.status === 'done');
-    for (let i = 0; i < count; i++) {
-      const seed = (Date.now() + i).toString(16);
-      const asked = { kind: 'calibration', surveys: MOST_SURVEYS, seed };
-      const { job } = await this.api.post<{ job: Job }>(`runs/${ended[0].id}/studies`, asked);
-      this.ids.push(job.id);
-    }
+  /** Sees to it that so many compute, in the place of those that have ended. */
+  async keep(count: number): Promise<void> {
+    this.ids = (await this.read()).filter(isOpen).map(({ id }) => id);
+    while (this.ids.length < count) this.ids.push(await this.ask());
     for (let s = 0; s < START_S; s++) {
       if ((await this.computing()) === count) return;
       await pause(1000);
@@ -38,12 +37,30 @@ export class LongJobs {
 
   /** @returns how many of them compute at this moment */
   async computing(): Promise<number> {
-    const jobs = await Promise.all(this.ids.map((id) => this.api.read<Job>(`jobs/${id}`)));
-    return jobs.filter(({ status }) => status === 'running').length;
+    return (await this.read()).filter(({ status }) => status === 'running').length;
   }
 
   async stop(): Promise<void> {
     for (const id of this.ids) await this.api.post(`jobs/${id}/cancel`, {}).catch(() => null);
-    while ((await this.computing()) > 0) await pause(500);
+    while ((await this.read()).some(isOpen)) await pause(500);
+  }
+
+  private read(): Promise<Job[]> {
+    return Promise.all(this.ids.map((id) => this.api.read<Job>(`jobs/${id}`)));
+  }
+
+  private async ask(): Promise<string> {
+    this.runId ??= await this.findRun();
+    const seed = (this.seed++).toString(16);
+    const asked = { kind: 'calibration', surveys: MOST_SURVEYS, seed };
+    const { job } = await this.api.post<{ job: Job }>(`runs/${this.runId}/studies`, asked);
+    return job.id;
+  }
+
+  private async findRun(): Promise<string> {
+    const { analyses } = await this.api.read<{ analyses: { runs: Run[] }[] }>('analyses');
+    const done = analyses.flatMap(({ runs }) => runs).find(({ job }) => job.status === 'done');
+    if (!done) throw new Error('no run has ended yet');
+    return done.id;
   }
 }

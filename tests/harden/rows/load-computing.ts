@@ -1,5 +1,5 @@
 import { Api } from '../api';
-import { listAddresses, pageAddresses } from '../load-addresses';
+import { LAB, listAddresses, pageAddresses } from '../load-addresses';
 import {
   CONNECTIONS,
   fireAt,
@@ -24,15 +24,24 @@ async function measure(bench: Bench): Promise<Measured> {
   const cookie = await signedIn(running, signInOf(running, 'owner'));
   const idle = await measureHealth(bench, running);
   const jobs = new LongJobs(new Api(running));
-  await jobs.start(JOBS);
+  let computing = JOBS;
+  const fireWhileComputing = async (routes: string[], rate?: number) => {
+    const shots: Shot[] = [];
+    for (const route of routes) {
+      await jobs.keep(JOBS);
+      shots.push(...(await fireAt(bench, running, cookie, [route], rate)));
+      computing = Math.min(computing, await jobs.computing());
+    }
+    return shots;
+  };
   try {
+    await jobs.keep(JOBS);
     const health = await measureHealth(bench, running);
-    const lists = await fireAt(bench, running, cookie, listAddresses());
+    const lists = await fireWhileComputing(listAddresses());
     const wanted = pageAddresses(bench.root).filter((page) =>
-      PAGES.some((one) => page.endsWith(`/breakwater${one}`)),
+      PAGES.some((one) => page === `/${LAB}${one}`),
     );
-    const pages = await fireAt(bench, running, cookie, wanted, PAGES_PER_SECOND);
-    const computing = await jobs.computing();
+    const pages = await fireWhileComputing(wanted, PAGES_PER_SECOND);
     const shots = [...lists, ...pages];
     // autocannon states no 95th percentile; the 97.5th is harder to meet.
     const missed = shots.filter((shot) => shot.p97Ms >= P95_MS || wrongAnswers([shot]) > 0);
@@ -40,7 +49,7 @@ async function measure(bench: Bench): Promise<Measured> {
     return {
       isMet: missed.length === 0 && computing === JOBS,
       figure:
-        `health ${idle.toFixed(0)}/s idle, ${health.toFixed(0)}/s while ${computing} long jobs ` +
+        `health ${idle.toFixed(0)}/s idle, ${health.toFixed(0)}/s while at least ${computing} long jobs ` +
         `compute; 97.5 % of answers of ${lists.length} lists (${CONNECTIONS} connections, ` +
         `${secondsEach()} s each) within ${most(lists)} ms, of ${pages.length} pages at ` +
         `${PAGES_PER_SECOND}/s within ${most(pages)} ms; ${missed.length} missed`,
