@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import pg from 'pg';
+import { Client } from 'pg';
 import { hashPassword } from '@/lib/access/passwords';
 import { hashToken, makeToken } from '@/lib/access/tokens';
 import type { RunningProduct } from './row';
@@ -9,7 +9,7 @@ export async function withRows<Answer>(
   { databaseUrl }: RunningProduct,
   work: (query: <Row>(sql: string, values?: unknown[]) => Promise<Row[]>) => Promise<Answer>,
 ): Promise<Answer> {
-  const client = new pg.Client({ connectionString: databaseUrl, application_name: 'harden' });
+  const client = new Client({ connectionString: databaseUrl, application_name: 'harden' });
   await client.connect();
   try {
     return await work(async (sql, values) => (await client.query(sql, values)).rows as never);
