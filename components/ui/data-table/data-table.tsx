@@ -10,7 +10,7 @@ import { rowsCsv } from './rows-csv';
 import { SelectBox, SelectHead } from './select-box';
 import { SortHead } from './sort-head';
 import { TableScroll } from './table-scroll';
-import { useDataRows } from './use-data-rows';
+import { nextSort, type TableSelection, useDataRows } from './use-data-rows';
 import { useTableView } from './use-table-view';
 
 /** Only a table of many rows needs to know which of them are in sight. */
@@ -31,13 +31,7 @@ interface DataTableProps<R extends object> {
   givenOrder?: string;
   /** Without its ending; left out, there is no file. */
   fileName?: string;
-  selection?: {
-    ids: ReadonlySet<string>;
-    onChange(ids: Set<string>): void;
-    /** The name of a row's box: "Compare A-31". */
-    label(row: R): string;
-    canSelect?(row: R): boolean;
-  };
+  selection?: TableSelection<R>;
   /** The row whose details stand beside the table. */
   currentId?: string | null;
   onRowClick?(row: R): void;
@@ -66,8 +60,7 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
     facets.map(({ id }) => id),
     props.isInAddress ?? true,
   );
-  const table = useDataRows({ ...props, facets, view, onView });
-  const shown = table.getRowModel().rows;
+  const { shown, selected, ...boxes } = useDataRows({ ...props, facets, view });
   const scroller = useRef<HTMLDivElement>(null);
   const isVirtual = shown.length >= MANY;
   const isSelecting = selection !== undefined;
@@ -81,36 +74,29 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
     countWords(shown.length, props.rows.length, noun),
     ...(isSelecting ? [`, ${chosen} selected`] : []),
   ].join('');
-  const csv = () =>
-    saveFile(
-      `${props.fileName}.csv`,
-      rowsCsv(
-        shown.map(({ original }) => original),
-        columns,
-      ),
-      'text/csv',
-    );
+  const csv = () => saveFile(`${props.fileName}.csv`, rowsCsv(shown, columns), 'text/csv');
   const draw = (window: RowWindow) => (
     <>
       {window.before > 0 && <Gap height={window.before} width={width} />}
       {window.indices.map((index) => {
         const row = shown[index];
+        const id = props.rowId(row);
         return (
           <Row
-            key={row.id}
+            key={id}
             ref={window.measure}
             data-index={index}
             aria-rowindex={isVirtual ? index + 2 : undefined}
-            isSelected={row.id === props.currentId || row.getIsSelected()}
+            isSelected={id === props.currentId || selected.has(id)}
             className={props.onRowClick ? 'cursor-pointer' : ''}
-            onClick={props.onRowClick && (() => props.onRowClick?.(row.original))}
+            onClick={props.onRowClick && (() => props.onRowClick?.(row))}
           >
             {selection && (
               <SelectBox
-                label={selection.label(row.original)}
-                isChecked={row.getIsSelected()}
-                isDisabled={selection.canSelect?.(row.original) === false}
-                onToggle={row.getToggleSelectedHandler()}
+                label={selection.label(row)}
+                isChecked={selected.has(id)}
+                isDisabled={selection.canSelect?.(row) === false}
+                onToggle={(isRange) => boxes.toggle(id, isRange)}
               />
             )}
             {columns.map((column) => (
@@ -120,7 +106,7 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
                 isRowHead={column.isRowHead}
                 className={column.className}
               >
-                {column.cell ? column.cell(row.original) : (column.value(row.original) ?? '–')}
+                {column.cell ? column.cell(row) : (column.value(row) ?? '–')}
               </Cell>
             ))}
           </Row>
@@ -150,22 +136,23 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
       >
         <TableHead>
           <tr aria-rowindex={isVirtual ? 1 : undefined}>
-            {isSelecting && <SelectHead table={table} many={noun.many} />}
-            {columns.map((column) => {
-              const held = table.getColumn(column.id);
-              return (
-                <SortHead
-                  key={column.id}
-                  name={column.name}
-                  isNumeric={column.isNumeric ?? false}
-                  className={column.className ?? ''}
-                  direction={held?.getIsSorted() ?? false}
-                  onSort={column.isUnsorted ? undefined : held?.getToggleSortingHandler()}
-                >
-                  {column.head}
-                </SortHead>
-              );
-            })}
+            {isSelecting && <SelectHead {...boxes} many={noun.many} />}
+            {columns.map((column) => (
+              <SortHead
+                key={column.id}
+                name={column.name}
+                isNumeric={column.isNumeric ?? false}
+                className={column.className ?? ''}
+                direction={view.sort?.id === column.id && (view.sort.isDescending ? 'desc' : 'asc')}
+                onSort={
+                  column.isUnsorted
+                    ? undefined
+                    : () => onView({ sort: nextSort(column, view.sort) })
+                }
+              >
+                {column.head}
+              </SortHead>
+            ))}
           </tr>
         </TableHead>
         <TableBody>

@@ -10,8 +10,8 @@ interface SelectBoxProps {
   label: string;
   isChecked: boolean;
   isDisabled: boolean;
-  /** Takes the click with its Shift key, which extends from the last box. */
-  onToggle(event: unknown): void;
+  /** With the Shift key the press reaches from the last box to this one. */
+  onToggle(isRange: boolean): void;
 }
 
 export function SelectBox({ label, isChecked, isDisabled, onToggle }: SelectBoxProps) {
@@ -23,7 +23,7 @@ export function SelectBox({ label, isChecked, isDisabled, onToggle }: SelectBoxP
           className={boxLook}
           checked={isChecked}
           disabled={isDisabled}
-          onChange={onToggle}
+          onChange={({ nativeEvent }) => onToggle((nativeEvent as MouseEvent).shiftKey === true)}
         />
         <span className="sr-only">{label}</span>
       </label>
@@ -32,22 +32,18 @@ export function SelectBox({ label, isChecked, isDisabled, onToggle }: SelectBoxP
 }
 
 interface SelectHeadProps {
-  table: {
-    getIsAllRowsSelected(): boolean;
-    getIsSomeRowsSelected(): boolean;
-    toggleAllRowsSelected(value?: boolean): void;
-  };
+  isAllSelected: boolean;
+  isSomeSelected: boolean;
+  toggleAll(isSelected: boolean): void;
   many: string;
 }
 
 /** All of the shown rows at once. */
-export function SelectHead({ table, many }: SelectHeadProps) {
+export function SelectHead({ isAllSelected, isSomeSelected, toggleAll, many }: SelectHeadProps) {
   const box = useRef<HTMLInputElement>(null);
-  const isAll = table.getIsAllRowsSelected();
-  const isSome = table.getIsSomeRowsSelected() && !isAll;
   useEffect(() => {
-    if (box.current) box.current.indeterminate = isSome;
-  }, [isSome]);
+    if (box.current) box.current.indeterminate = isSomeSelected;
+  }, [isSomeSelected]);
   return (
     <HeadCell className="w-8">
       <label className={frameLook}>
@@ -55,8 +51,8 @@ export function SelectHead({ table, many }: SelectHeadProps) {
           ref={box}
           type="checkbox"
           className={boxLook}
-          checked={isAll}
-          onChange={() => table.toggleAllRowsSelected(!isAll)}
+          checked={isAllSelected}
+          onChange={() => toggleAll(!isAllSelected)}
         />
         <span className="sr-only">Select all shown {many}</span>
       </label>

@@ -9,7 +9,7 @@ interface SortHeadProps {
   className: string;
   direction: false | 'asc' | 'desc';
   /** Left out where the column has no order. */
-  onSort?(event: unknown): void;
+  onSort?(): void;
 }
 
 /** A head that orders the rows when pressed: up, down, and back to the order they came in. */
@@ -35,7 +35,7 @@ export function SortHead({
         type="button"
         className={`inline-flex items-end gap-1 hover:text-ink max-md:min-h-11 max-md:items-center ${isNumeric ? 'flex-row-reverse' : ''} ${direction ? 'font-semibold text-ink' : ''}`}
         title={`Order by ${name}`}
-        onClick={onSort}
+        onClick={() => onSort()}
       >
         {children}
         <span className={`w-3 ${direction ? '' : 'opacity-0'}`}>

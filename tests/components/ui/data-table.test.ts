@@ -4,7 +4,13 @@ import { describe, expect, it } from 'vitest';
 import type { DataColumn, Facet, TableView } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
 import { rowsCsv } from '@/components/ui/data-table/rows-csv';
-import { compareCells, keepsRow } from '@/components/ui/data-table/use-data-rows';
+import {
+  arrangeRows,
+  compareCells,
+  keepsRow,
+  nextSelection,
+  nextSort,
+} from '@/components/ui/data-table/use-data-rows';
 import { readView, writeView } from '@/components/ui/data-table/use-table-view';
 
 interface Planet {
@@ -81,6 +87,42 @@ describe('what is kept', () => {
     expect(kept({ words: 'rb 13' })).toBe(false);
     expect(kept({ words: 'rb', facets: { mass: 'heavy' } })).toBe(false);
     expect(kept({ words: 'rb', facets: { mass: '' } })).toBe(true);
+  });
+});
+
+describe('the order of rows', () => {
+  const mixed = [...planets(12), { id: 'u', name: 'RB u', massMjup: null }];
+  const ids = (part: Partial<TableView>) =>
+    arrangeRows(mixed, columns, view(part), []).map(({ id }) => id);
+
+  it('goes both ways with what is unknown last, and otherwise is as the rows came', () => {
+    expect(ids({ sort: { id: 'mass', isDescending: true } }).slice(0, 2)).toEqual(['p11', 'p10']);
+    expect(ids({ sort: { id: 'mass', isDescending: true } }).at(-1)).toBe('u');
+    expect(ids({ sort: { id: 'mass', isDescending: false } }).at(-1)).toBe('u');
+    expect(ids({})).toEqual(mixed.map(({ id }) => id));
+    expect(ids({ sort: { id: 'curve', isDescending: true } })).toEqual(ids({}));
+  });
+
+  it('turns at each press of a head, numbers from the largest', () => {
+    const [name, mass] = columns;
+    const presses = (column: typeof name) => {
+      const first = nextSort(column, null);
+      const second = nextSort(column, first);
+      return [first?.isDescending, second?.isDescending, nextSort(column, second)];
+    };
+    expect(presses(mass)).toEqual([true, false, null]);
+    expect(presses(name)).toEqual([false, true, null]);
+    expect(nextSort(name, nextSort(mass, null))?.id).toBe('name');
+  });
+});
+
+describe('the pressed boxes', () => {
+  const shown = ['a', 'b', 'c', 'd'];
+  it('are one, or all from the last one with Shift, in either direction', () => {
+    expect([...nextSelection(new Set(['x']), shown, 'b', null)]).toEqual(['x', 'b']);
+    expect([...nextSelection(new Set(['d']), shown, 'b', 'd')].sort()).toEqual(['b', 'c', 'd']);
+    expect([...nextSelection(new Set(shown), shown, 'c', 'a')]).toEqual(['d']);
+    expect([...nextSelection(new Set(), shown, 'c', 'gone')]).toEqual(['c']);
   });
 });
 
