@@ -2,18 +2,18 @@
 
 import { useMemo } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useLoaded } from '@/components/hooks/use-loaded';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
-import { askedOf } from '@/components/runs/live-answer';
-import { restrictSample, sampleOf } from '@/components/runs/live-sample';
 import type { LiveSetting } from '@/components/runs/live-setting';
 import { FactsStrip } from '@/components/ui/facts-strip';
 import { SectionOpener } from '@/components/ui/section-opener';
-import { type Answer, answerFromView, describeLevel, viewPopulation } from '@/lib/inference';
+import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatSignificant } from '@/lib/quantities/display';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyView } from '@/lib/schemas/surveys';
+import type { Estimated } from './estimated';
 import { listNames } from './name-words';
 
 interface EstimateProps {
@@ -26,33 +26,20 @@ interface EstimateProps {
   needsRun?: boolean;
 }
 
-/** The answer of the stored maps, or why they give none. */
-interface Estimated {
-  answer?: Answer;
-  refusal?: string;
-}
-
 /** What the choices would give, from maps that a run has used already. */
 export function Estimate(props: EstimateProps) {
   const { collaboration, run, surveys, setting, needsRun = false } = props;
   const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
   const inputs = run?.inputs ?? undefined;
   const ids = surveys.map((survey) => survey.id).join();
-  const { answer: estimate = null, refusal } = useMemo((): Estimated => {
-    if (!maps || !inputs || !setting) return {};
-    const wanted = new Set(ids.split(','));
-    const sample = restrictSample(sampleOf(inputs, maps), (star) =>
-      star.surveys.some((survey) => wanted.has(survey)),
-    );
-    if (sample.stars.length === 0) return {};
-    try {
-      const view = viewPopulation(sample.maps, sample.grid, setting.definition);
-      return { answer: answerFromView(view, askedOf(sample, setting)) };
-    } catch (reason) {
-      if (reason instanceof RangeError) return { refusal: reason.message };
-      throw reason;
-    }
-  }, [maps, inputs, setting, ids]);
+  const engine = useLoaded('estimate', () => import('./estimated'));
+  const { answer: estimate = null, refusal } = useMemo(
+    (): Estimated =>
+      maps && inputs && setting && engine
+        ? engine.estimateOf(inputs, maps, ids.split(','), setting)
+        : {},
+    [maps, inputs, setting, ids, engine],
+  );
   const missing = surveys.filter(
     (survey) => !inputs?.surveys.some((known) => known.id === survey.id),
   );
@@ -92,7 +79,7 @@ export function Estimate(props: EstimateProps) {
             needsRun,
             refusal,
             hasRun: run !== null,
-            isLoading,
+            isLoading: isLoading || engine === undefined,
             error: error === undefined ? undefined : sentenceOf(error),
             isUnconstrained: estimate !== null,
             hasSurveys: surveys.length > 0,

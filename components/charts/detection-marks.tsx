@@ -1,5 +1,5 @@
 import { type Box, boxesMeet } from './map-contours';
-import type { MapFrame } from './map-layers';
+import type { MapFrame } from './map-frame';
 import { textWidth } from './text-width';
 
 export interface MapDetection {

@@ -3,7 +3,7 @@
 import { type KeyboardEvent, type PointerEvent, useRef } from 'react';
 import { formatPlain } from '@/lib/quantities/display';
 import type { MapData } from './map-contours';
-import type { MapFrame } from './map-layers';
+import type { MapFrame } from './map-frame';
 
 export interface MapRange {
   massMinMjup: number;

@@ -3,7 +3,7 @@ import { OverlaidPosteriorsChart } from '@/components/charts/overlaid-posteriors
 import { rateAxisMax } from '@/components/charts/rate-curve';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { countOf } from '@/components/runs/level-table';
-import { savedAnswer } from '@/components/runs/live-answer';
+import { savedAnswer } from '@/components/runs/limit-answer';
 import { reachTo } from '@/components/runs/posterior-data';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Plate, StatementNumber } from '@/components/ui/plate';

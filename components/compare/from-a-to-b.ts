@@ -1,6 +1,7 @@
-import { askedOf, orNull } from '@/components/runs/live-answer';
+import { askedOf } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { isSameSetting, type LiveSetting, settingOfRecipe } from '@/components/runs/live-setting';
+import { orNull } from '@/components/runs/or-null';
 import { answerFromView, type PopulationView, viewPopulation } from '@/lib/inference';
 import { type OrderStep, stepsOverOrders } from '@/lib/inference/order-steps';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';

@@ -3,7 +3,7 @@
 import dynamic from 'next/dynamic';
 import { type ReactNode, useDeferredValue, useMemo, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
-import { orNull } from '@/components/runs/live-answer';
+import { orNull } from '@/components/runs/or-null';
 import { profileAlong } from '@/components/runs/survey-sums';
 import { Button } from '@/components/ui/button';
 import { LinkButton } from '@/components/ui/link-button';
@@ -15,8 +15,7 @@ import { DEFAULT_GRID } from '@/lib/sensitivity';
 import type { PopulationBuilderProps } from './builder-props';
 import { type BuilderSetting, builderToQuery, defaultSetting } from './builder-setting';
 import { InWords } from './in-words';
-import { faultOf, isSameLaw, type LawDefinition } from './law-parts';
-import { hasIndexPlane } from './limit-plane';
+import { faultOf, hasIndexPlane, isSameLaw, type LawDefinition } from './law-parts';
 import { orbitWords } from './orbit-words';
 import { PopulationAlone } from './population-alone';
 import { SavePopulation } from './save-population';

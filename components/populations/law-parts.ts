@@ -195,3 +195,9 @@ export function faultOf(definition: PopulationDefinition): string | null {
     return error.message;
   }
 }
+
+/** Whether the population has an index along each axis, and so a plane of both. */
+export function hasIndexPlane(definition: LawDefinition): boolean {
+  const { mass, semiMajorAxis } = partsOf(definition);
+  return mass.shape.shape === 'power-law' && semiMajorAxis.shape.shape === 'power-law';
+}

@@ -1,5 +1,5 @@
-import { orNull } from '@/components/runs/live-answer';
 import type { LiveSample } from '@/components/runs/live-sample';
+import { orNull } from '@/components/runs/or-null';
 import { answerFromView, completenessWhileMoving } from '@/lib/inference';
 import { marginalWeights, rateScales, toLogIndex } from '@/lib/population';
 import { definitionOf, type LawDefinition, partsOf } from './law-parts';
@@ -14,12 +14,6 @@ export interface PlaneOfLimits {
 
 const ROWS = 10;
 const COLUMNS = 10;
-
-/** Whether the population has an index along each axis, and so a plane of both. */
-export function hasIndexPlane(definition: LawDefinition): boolean {
-  const { mass, semiMajorAxis } = partsOf(definition);
-  return mass.shape.shape === 'power-law' && semiMajorAxis.shape.shape === 'power-law';
-}
 
 /** The limit over both linear indices, around the present ones. */
 export function limitPlane(

@@ -2,15 +2,15 @@
 
 import { useMemo } from 'react';
 import { ChartFigure } from '@/components/charts/chart-figure';
-import { MapAxes, mapFrame } from '@/components/charts/map-layers';
+import { MapAxes, mapFrame } from '@/components/charts/map-frame';
 import { useWidth } from '@/components/charts/use-width';
-import { orNull } from '@/components/runs/live-answer';
+import { orNull } from '@/components/runs/or-null';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { type Population, populationBox } from '@/lib/population';
 import { formatRange } from '@/lib/quantities/display';
 import type { MapGrid } from '@/lib/sensitivity';
-import { drawSeen } from './preview-figures';
+import { drawSeen } from './draw-seen';
 
 const margin = { left: 46, right: 16, top: 8, bottom: 46 };
 const height = 420;

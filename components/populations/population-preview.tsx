@@ -1,15 +1,16 @@
 'use client';
 
 import { useMemo } from 'react';
-import { orNull } from '@/components/runs/live-answer';
+import { orNull } from '@/components/runs/or-null';
 import { Notice } from '@/components/ui/notice';
 import { hostScalingOf, type Population } from '@/lib/population';
 import type { PreviewSetting } from './builder-setting';
+import { drawSeen } from './draw-seen';
 import type { LawDefinition } from './law-parts';
 import { marginsOf } from './margins';
 import { MissingMasses, missingMasses } from './missing-masses';
 import { PreviewFacts } from './preview-facts';
-import { drawSeen, faultOnSample, previewAnswer } from './preview-figures';
+import { faultOnSample, previewAnswer } from './preview-figures';
 import { PreviewScatter } from './preview-scatter';
 import { PreviewWarnings } from './preview-warnings';
 import { spreadOf } from './spread';

@@ -15,10 +15,11 @@ import {
   weightsWhileMoving,
 } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
-import { askedOf, orNull } from './live-answer';
+import { askedOf } from './live-answer';
 import type { LiveSample } from './live-sample';
 import { type LiveSetting, withLikelihood } from './live-setting';
 import { otherAxis, viewContracted } from './live-views';
+import { orNull } from './or-null';
 import { TRACK, trackOf } from './tracks';
 
 /** The limit as a function of one control, all others standing still. */

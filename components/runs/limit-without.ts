@@ -1,7 +1,8 @@
 import { answerFromView, type PopulationView } from '@/lib/inference';
-import { askedOf, orNull } from './live-answer';
+import { askedOf } from './live-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
+import { orNull } from './or-null';
 
 export interface WithoutStars {
   stars: number;

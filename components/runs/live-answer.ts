@@ -1,9 +1,4 @@
-import {
-  type RateCurve,
-  rateAxisMax,
-  samplePrior,
-  sampleRateCurve,
-} from '@/components/charts/rate-curve';
+import { rateAxisMax, samplePrior, sampleRateCurve } from '@/components/charts/rate-curve';
 import {
   type Answer,
   type AnswerSettings,
@@ -21,22 +16,12 @@ import {
   TABLE_LEVELS,
   whyNoColumn,
 } from '@/lib/inference';
-import type { RateAnswer, RunResult } from '@/lib/schemas/runs';
+import type { RunResult } from '@/lib/schemas/runs';
 import type { Beside } from './beside-table';
+import type { LimitAnswer } from './limit-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
-
-/** One posterior, summed up at the level of the setting. */
-export interface LimitAnswer {
-  limit: number;
-  median: number;
-  interval68: [number, number];
-  isConstrained: boolean;
-  isSetByPrior: boolean;
-  curve: RateCurve;
-  /** At the rates of the curve; NaN where the prior has no density. */
-  prior: Float64Array;
-}
+import { orNull } from './or-null';
 
 /** Everything that follows a control at once. */
 export interface LiveAnswer {
@@ -126,24 +111,6 @@ function asStored(beside: FrequentistCompanions, level: number): Beside {
   };
 }
 
-/** What a finished run says, in the shape in which a live answer comes. */
-export function savedAnswer(answer: RateAnswer): LimitAnswer {
-  const { curve } = answer;
-  return {
-    limit: answer.limit,
-    median: answer.median,
-    interval68: answer.interval68,
-    isConstrained: answer.isConstrained,
-    isSetByPrior: answer.isSetByPrior,
-    curve: {
-      rate: Float64Array.from(curve.value),
-      density: Float64Array.from(curve.density),
-      cumulative: Float64Array.from(curve.cumulative),
-    },
-    prior: Float64Array.from(curve.value, (_, point) => curve.prior[point] ?? Number.NaN),
-  };
-}
-
 function tableOfLevels(
   view: PopulationView,
   asked: AnswerSettings,
@@ -183,14 +150,4 @@ function once<T>(make: () => T): () => T {
     made ??= { value: make() };
     return made.value;
   };
-}
-
-/** The answer, or null where the question has none. */
-export function orNull<T>(ask: () => T): T | null {
-  try {
-    return ask();
-  } catch (reason) {
-    if (reason instanceof RangeError) return null;
-    throw reason;
-  }
 }

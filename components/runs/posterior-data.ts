@@ -2,7 +2,7 @@ import type { PosteriorData } from '@/components/charts/posterior-words';
 import { type RateCurve, rateAxisMax } from '@/components/charts/rate-curve';
 import type { RateQuantity } from '@/lib/inference';
 import { formatPlain } from '@/lib/quantities/display';
-import type { LimitAnswer } from './live-answer';
+import type { LimitAnswer } from './limit-answer';
 import type { LiveSetting } from './live-setting';
 
 interface PosteriorInputs {

@@ -7,7 +7,6 @@ import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
-import { documentOfShown } from '@/components/statement/document-of-shown';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
@@ -222,7 +221,16 @@ function ResultPlate({
             cooling: inputs.cooling,
           })}
           announced={announced}
-          copy={<ShownStatementCopy make={() => documentOfShown({ run, inputs, result, shown })} />}
+          copy={
+            <ShownStatementCopy
+              make={async () => {
+                const { documentOfShown } = await import(
+                  '@/components/statement/document-of-shown'
+                );
+                return documentOfShown({ run, inputs, result, shown });
+              }}
+            />
+          }
           onDefinition={onDefinition}
         />
       </div>

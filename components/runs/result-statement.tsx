@@ -13,7 +13,7 @@ import {
 import { formatPercent, formatRate, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import { EditableRange } from './editable-range';
-import type { LimitAnswer } from './live-answer';
+import type { LimitAnswer } from './limit-answer';
 import type { LiveSetting } from './live-setting';
 
 interface ResultStatementProps {

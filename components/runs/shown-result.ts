@@ -2,7 +2,7 @@ import type { RateQuantity, StatedCandidates } from '@/lib/inference';
 import { isInside } from '@/lib/population';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 import type { Beside } from './beside-table';
-import { type LimitAnswer, savedAnswer } from './live-answer';
+import { type LimitAnswer, savedAnswer } from './limit-answer';
 import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
 import type { LiveOutcome } from './use-live-result';
 

@@ -1,11 +1,11 @@
 'use client';
 
 import { useMemo } from 'react';
+import { useLoaded } from '@/components/hooks/use-loaded';
 import type { PopulationView } from '@/lib/inference';
-import { type LiveAnswer, liveAnswer } from './live-answer';
+import type { LiveAnswer } from './live-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
-import { LiveViews } from './live-views';
 
 /** An answer, or the sentence that says why there is none. */
 export type LiveOutcome =
@@ -17,17 +17,21 @@ export function useLiveResult(
   sample: LiveSample | undefined,
   setting: LiveSetting,
 ): LiveOutcome | undefined {
-  const views = useMemo(() => sample && new LiveViews(sample), [sample]);
+  const engine = useLoaded('live engine', () => import('./live-engine'));
+  const views = useMemo(
+    () => (sample && engine ? new engine.LiveViews(sample) : undefined),
+    [sample, engine],
+  );
   const view = useMemo(
     () => views && attempt(() => views.of(setting.definition)),
     [views, setting.definition],
   );
   return useMemo(() => {
-    if (!sample || !view) return undefined;
+    if (!sample || !engine || !view) return undefined;
     if (view.fault !== undefined) return { fault: view.fault };
-    const live = attempt(() => liveAnswer(sample, view.value, setting));
+    const live = attempt(() => engine.liveAnswer(sample, view.value, setting));
     return live.fault === undefined ? { view: view.value, live: live.value } : live;
-  }, [sample, view, setting]);
+  }, [sample, engine, view, setting]);
 }
 
 function attempt<T>(

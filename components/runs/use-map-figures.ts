@@ -6,8 +6,8 @@ import type { MapData } from '@/components/charts/map-contours';
 import { populationWeights } from '@/lib/population';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
-import { orNull } from './live-answer';
 import type { LiveSample } from './live-sample';
+import { orNull } from './or-null';
 import { depthOf, profileAlong, sumBySurvey } from './survey-sums';
 
 /** The mean map and the depth by survey, as a run stored them. */

@@ -54,12 +54,12 @@ function CopyMenu({ of = 'this limit', label = 'Copy statement', align, write }:
 type Place = Pick<CopyMenuProps, 'of' | 'label' | 'align'>;
 
 /** Of a limit that a page computed: its words are made in the page, when somebody asks. */
-export function ShownStatementCopy({ make, ...place }: Place & { make(): LimitDocument }) {
+export function ShownStatementCopy({ make, ...place }: Place & { make(): Promise<LimitDocument> }) {
   const write = async (form: Form) => {
     const { limitAsJson, limitAsLatex, limitAsText } = await import(
       '@/lib/inference/statement-forms'
     );
-    return { text: limitAsText, latex: limitAsLatex, json: limitAsJson }[form](make());
+    return { text: limitAsText, latex: limitAsLatex, json: limitAsJson }[form](await make());
   };
   return <CopyMenu {...place} write={write} />;
 }

@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import Link from 'next/link';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
@@ -18,12 +19,14 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import type { UploadKindName } from '@/lib/schemas/uploads';
-import { FileCheck } from './file-check';
 import { fileKinds } from './file-kinds';
 import { FileNeeds } from './file-needs';
 import type { IncomingEntry } from './incoming-entry';
 import { describeMapSettings } from './map-setting-words';
 import { MapSettingsDialog } from './map-settings-dialog';
+
+/** Comes with the first file. */
+const FileCheck = dynamic(async () => (await import('./file-check')).FileCheck);
 
 /** Three steps on one page: files, check, store. Storing is one transaction a file. */
 export function ImportScreen({

@@ -1,15 +1,13 @@
 import { logSumExp } from '@/lib/numerics/sums';
 import { backgroundLikelihood } from './background';
 import type { CheckedQuestion } from './checked-question';
+import { MOST_CANDIDATES } from './contract';
 import { poissonBinomial } from './frequentist';
 import { hostFractionLikelihood } from './host-fraction';
 import { integrateDensity } from './integrated-density';
 import { poissonLikelihood, type RateLikelihood } from './poisson';
 import type { PriorLaw } from './prior-law';
 import { stretchesOf } from './product';
-
-/** Most candidates of a host fraction: every subset of them is weighed. */
-export const MOST_CANDIDATES = 12;
 
 /** The likelihood of a number of detections, candidates aside. */
 export function settledLikelihood(question: CheckedQuestion, counted: number[]): RateLikelihood {

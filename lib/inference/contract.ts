@@ -25,6 +25,9 @@ export type RatePrior =
   | { law: 'beta'; a: number; b: number }
   | { law: 'tabulated'; value: number[]; density: number[]; source?: string };
 
+/** Most candidates of a host fraction: every subset of them is weighed. */
+export const MOST_CANDIDATES = 12;
+
 /** A candidate that nobody settled: its star, and the probability [fraction] that it is real. */
 export interface UndecidedCandidate {
   star: number;

@@ -17,7 +17,6 @@ export type { CalibrationPart, CalibrationSetup } from './calibration';
 export { calibrationPart, RANK_DRAWS } from './calibration';
 export type { Calibration, Coverage } from './calibration-verdict';
 export { isAsPredicted, kolmogorovP, mergeCalibration } from './calibration-verdict';
-export { MOST_CANDIDATES } from './candidates';
 export type {
   CandidateTreatment,
   Likelihood,
@@ -27,6 +26,7 @@ export type {
   RateQuestion,
   UndecidedCandidate,
 } from './contract';
+export { MOST_CANDIDATES } from './contract';
 export type { ContractedMaps } from './contraction';
 export { completenessWhileMoving, contractStack, contractStillAxis } from './contraction';
 export type { ExposureContributions } from './contributions';

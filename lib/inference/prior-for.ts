@@ -1,5 +1,4 @@
-import { MOST_CANDIDATES } from './candidates';
-import type { Likelihood, RatePrior, RateQuestion } from './contract';
+import { type Likelihood, MOST_CANDIDATES, type RatePrior, type RateQuestion } from './contract';
 
 /**
  * The same prior for the other quantity, for the table that shows both: cut at 1 for a fraction.

@@ -3,7 +3,7 @@ import path from 'node:path';
 import { databaseAddress, querySuperuser } from './cluster-server.mjs';
 import { installDebianPackage } from './debian.mjs';
 import { dataFolder, LauncherProblem, root } from './environment.mjs';
-import { MOST_BYTES, measurePages, sizeLine } from './page-sizes.mjs';
+import { countPages, measurePages } from './page-sizes.mjs';
 import { findFreePort } from './ports.mjs';
 import { run } from './process-run.mjs';
 import { chooseMail, productEnvironment, runScript, startProduct } from './product.mjs';
@@ -21,17 +21,13 @@ const chromium = '/usr/bin/chromium';
 const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
 
 /**
- * Builds the web part, and says what each page of it loads first; `node lib/local/page-sizes.mjs`
- * fails where that is too much.
+ * Builds the web part, and weighs what each page of it loads first.
  *
- * @returns {Promise<Count>}
+ * @returns {Promise<Count>} a test a page
  */
 export async function checkBuild() {
   if (freshBuild() === null) await buildWeb(testDistFolder, { isPatient: true });
-  const pages = measurePages(freshBuild() ?? testDistFolder);
-  const large = pages.filter(({ bytes }) => bytes > MOST_BYTES).length;
-  const head = `Compressed JavaScript of the first load; ${large} of ${pages.length} pages above ${MOST_BYTES / 1000} kB:`;
-  return { passed: 1, failed: 0, notes: [[head, ...pages.map(sizeLine)].join('\n')] };
+  return countPages(measurePages(freshBuild() ?? testDistFolder));
 }
 
 /**
@@ -76,34 +72,38 @@ async function placeOf(/** @type {Demonstration} */ demonstration) {
  * own ports, own mailbox.
  *
  * @param {import('./cluster-files.mjs').Cluster} cluster
- * @param {{ demonstration: Promise<Demonstration>, reportFile: string,
- *   onSupervisor: (supervisor: Supervisor) => void }} options
+ * @param {object} options
+ * @param {Promise<Demonstration>} options.demonstration
+ * @param {string} options.reportFile
+ * @param {(supervisor: Supervisor) => void} options.onSupervisor
+ * @param {string[]} [options.files] all where it is left out
+ * @param {Record<string, string>} [options.environment] what else the tests are told
  * @returns {Promise<Count>}
  */
-export async function runBrowserTests(cluster, { demonstration, reportFile, onSupervisor }) {
+export async function runBrowserTests(cluster, options) {
   if (freshBuild() === null) throw new LauncherProblem('There is no build of the web part to test');
   if (!existsSync(chromium)) await installDebianPackage('chromium', 'for the browser tests');
-  const made = await demonstration;
+  const made = await options.demonstration;
   const supervisor = new Supervisor({
     logsFolder: path.join(made.folder, 'logs'),
     say: (line) => process.stdout.write(`    ${line}\n`),
   });
-  onSupervisor(supervisor);
+  options.onSupervisor(supervisor);
   try {
     const product = await placeOf(made);
     await startProduct(supervisor, product);
-    return await runPlaywright(product, reportFile);
+    return await runPlaywright(product, options);
   } finally {
     await supervisor.stop();
     await querySuperuser(cluster, `drop database if exists ${made.database} with (force)`);
   }
 }
 
-async function runPlaywright(product, reportFile) {
+async function runPlaywright(product, { reportFile, files = [], environment = {} }) {
   rmSync(reportFile, { force: true });
   const { code, output } = await run(
     path.join(root, 'node_modules/.bin/playwright'),
-    ['test', '--reporter=line,json'],
+    ['test', '--reporter=line,json', ...files],
     {
       env: testEnvironment({
         BASE_URL: product.address,
@@ -112,6 +112,7 @@ async function runPlaywright(product, reportFile) {
         RAREBOUND_DATA_DIR: product.folder,
         PLAYWRIGHT_JSON_OUTPUT_FILE: reportFile,
         FORCE_COLOR: '0',
+        ...environment,
       }),
     },
   );

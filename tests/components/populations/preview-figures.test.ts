@@ -1,11 +1,10 @@
 import { describe, expect, it } from 'vitest';
+import { drawSeen, PLANETS } from '@/components/populations/draw-seen';
 import { interpolateMap } from '@/components/populations/interpolate-map';
 import { limitPlane } from '@/components/populations/limit-plane';
 import {
   betterStart,
-  drawSeen,
   faultOnSample,
-  PLANETS,
   parameterTrace,
   previewAnswer,
   shareHardlySeen,

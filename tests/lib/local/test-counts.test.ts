@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { countPages, MOST_BYTES } from '@/lib/local/page-sizes.mjs';
 import {
   addCounts,
   countCommand,
@@ -109,5 +110,20 @@ describe('the other counts', () => {
   it('addCounts adds', () => {
     const one = { passed: 1, failed: 2, notes: ['a'] };
     expect(addCounts([one, one])).toEqual({ passed: 2, failed: 4, notes: ['a', 'a'] });
+  });
+});
+
+describe('countPages(pages)', () => {
+  const page = (bytes: number) => ({ page: `/${bytes}`, bytes, files: [] });
+
+  it('fails for each page that loads too much, and names it', () => {
+    const count = countPages([page(MOST_BYTES + 1), page(MOST_BYTES)]);
+    expect(count).toMatchObject({ passed: 1, failed: 1 });
+    expect(count.notes[0]).toContain('1 of 2 pages above 200 kB');
+    expect(count.notes[0]).toContain('/200001');
+  });
+
+  it('fails where there is no page', () => {
+    expect(countPages([]).failed).toBe(1);
   });
 });

@@ -1,0 +1,3 @@
+/** What answers a moved control: of use only with the maps, and so fetched beside them. */
+export { liveAnswer } from './live-answer';
+export { LiveViews } from './live-views';
