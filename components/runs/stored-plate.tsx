@@ -8,7 +8,7 @@ import { describeLevel } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
-import { savedAnswer } from './live-answer';
+import { savedAnswer } from './limit-answer';
 import { posteriorData } from './posterior-data';
 import { lead } from './result-statement';
 import { recipeOfRun } from './run-recipe';

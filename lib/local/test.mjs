@@ -1,7 +1,7 @@
 import { mkdirSync } from 'node:fs';
 import path from 'node:path';
 import { bundleScripts } from './bundle.mjs';
-import { dataFolder, folderDigest, LauncherProblem, runCommand } from './environment.mjs';
+import { dataFolder, folderDigest, LauncherProblem, root, runCommand } from './environment.mjs';
 import { holdExclusively } from './exclusive.mjs';
 import { ensurePackages } from './packages.mjs';
 import { endRunning } from './process-run.mjs';
@@ -54,15 +54,26 @@ async function databaseTests(name) {
 const plainTests = (/** @type {string} */ name) =>
   runVitest(name, { reportFile: reportOf(name), environment: testEnvironment() });
 
-async function browserTests() {
+async function browserTests(part = {}) {
   const { cluster } = await prepareOnce();
   return runBrowserTests(cluster, {
     demonstration: demonstrateOnce(),
+    ...part,
     reportFile: reportOf('browser'),
     onSupervisor: (started) => {
       supervisor = started;
     },
   });
+}
+
+/** Looks at every screen, and keeps a picture of it at each width in each theme. */
+async function pictureScreens() {
+  const folder = path.join(root, 'test-results/screens');
+  const count = await browserTests({
+    files: ['screens.spec.ts'],
+    environment: { SCREEN_PICTURES: folder },
+  });
+  return { ...count, notes: [...count.notes, `The pictures are in ${folder}`] };
 }
 
 /** In the order in which they are run; what is quick to run and to mend comes first. */
@@ -87,7 +98,9 @@ const groups = {
     workers: () => databaseTests('workers'),
   },
   behind: { build: checkBuild },
-  last: { browser: browserTests },
+  last: { browser: () => browserTests() },
+  /** Only when they are asked for. */
+  onDemand: { screens: pictureScreens },
 };
 const steps = Object.assign({}, ...Object.values(groups));
 
@@ -133,6 +146,7 @@ async function countSteps(/** @type {string[]} */ names) {
   await lane(wantedOf('full'));
   await Promise.all([lane(wantedOf('waiting')), behind()]);
   await lane(wantedOf('last'));
+  if (names.length > 0) await lane(wantedOf('onDemand'));
   return counts;
 }
 

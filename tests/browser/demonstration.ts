@@ -1,9 +1,9 @@
 import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import { type ConsoleMessage, expect, type Page, type Request } from '@playwright/test';
+import { LAB } from './screens';
 
-/** Slug of the collaboration that the seed writes. */
-export const LAB = '/breakwater';
+export { LAB };
 
 /** A file of the project, for an upload. */
 export const projectFile = (name: string) => path.resolve(__dirname, '../..', name);

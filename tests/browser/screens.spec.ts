@@ -1,46 +1,33 @@
+import path from 'node:path';
 import AxeBuilder from '@axe-core/playwright';
 import { expect, type Page, test } from '@playwright/test';
-import { LAB, signIn, watchPage } from './demonstration';
+import { signIn, watchPage } from './demonstration';
+import { addressOf, fileNameOf, labScreens, openScreens } from './screens';
 
 // A trace records every element of every chart at each step, which takes longer than the tests.
 test.use({ trace: 'off' });
 
-const outside = ['/sign-in', '/sign-up', '/join/no-such-invitation'];
-const inside = [
-  LAB,
-  `${LAB}/surveys`,
-  `${LAB}/surveys/new`,
-  `${LAB}/surveys/halyard`,
-  `${LAB}/surveys/halyard/import`,
-  `${LAB}/populations`,
-  `${LAB}/populations/P-1`,
-  `${LAB}/analyses`,
-  `${LAB}/analyses/new`,
-  `${LAB}/analyses/A-1`,
-  `${LAB}/analyses/A-1/calibration`,
-  ...['systematics', 'influence', 'limit-map', 'sweep', 'free-indices'].map(
-    (kind) => `${LAB}/analyses/A-1/studies/${kind}`,
-  ),
-  ...['population-comparison', 'counts', 'overlap-rules'].map(
-    (kind) => `${LAB}/analyses/A-1/studies/${kind}`,
-  ),
-  `${LAB}/compare?with=A-1,A-2`,
-  `${LAB}/forecasts`,
-  `${LAB}/forecasts/new`,
-  `${LAB}/stars`,
-  `${LAB}/stars/overlaps`,
-  `${LAB}/stars/ages`,
-  `${LAB}/stars/samples`,
-  `${LAB}/candidates`,
-  `${LAB}/surveys/combine`,
-  `${LAB}/cooling`,
-  `${LAB}/maps`,
-  `${LAB}/populations/new`,
-  `${LAB}/people`,
-  `${LAB}/settings`,
-  `${LAB}/settings/work`,
-  `${LAB}/me/tokens`,
+/** Where pictures of every screen go; without it none are taken. */
+const pictures = process.env.SCREEN_PICTURES;
+const windows = [
+  { width: 1440, height: 900 },
+  { width: 768, height: 844 },
+  { width: 390, height: 844 },
 ];
+
+/** A picture at each width in each theme. */
+async function takePictures(page: Page, screen: string): Promise<void> {
+  if (pictures === undefined) return;
+  for (const colorScheme of ['light', 'dark'] as const) {
+    await page.emulateMedia({ colorScheme });
+    for (const size of windows) {
+      await page.setViewportSize(size);
+      const name = `${fileNameOf(screen)}-${size.width}-${colorScheme}.jpg`;
+      const file = path.join(pictures, name);
+      await page.screenshot({ path: file, fullPage: true, type: 'jpeg', quality: 80 });
+    }
+  }
+}
 
 /** Serious and critical findings, each with the first element that it concerns. */
 async function findings(page: Page, rules?: string[]): Promise<string[]> {
@@ -62,7 +49,8 @@ const excessWidth = (page: Page) =>
  * narrow screen, no complaint in the console and no other host. The widths and the themes change
  * by style alone, so the page is loaded once.
  */
-async function look(page: Page, address: string): Promise<void> {
+async function look(page: Page, screen: string): Promise<void> {
+  const address = await addressOf(page.request, screen);
   const { faults, stop } = watchPage(page);
   await page.emulateMedia({ colorScheme: 'light', reducedMotion: 'reduce' });
   await page.setViewportSize({ width: 1440, height: 900 });
@@ -76,12 +64,13 @@ async function look(page: Page, address: string): Promise<void> {
     await page.setViewportSize({ width, height: 844 });
     await expect.poll(() => excessWidth(page), { message: `at ${width} px` }).toBe(0);
   }
+  await takePictures(page, screen);
   stop();
   expect(faults).toEqual([]);
 }
 
-for (const address of outside) {
-  test(`without a session: ${address}`, ({ page }) => look(page, address));
+for (const screen of openScreens.filter((one) => !one.includes('{'))) {
+  test(`without a session: ${screen}`, ({ page }) => look(page, screen));
 }
 
 test.describe('of a collaboration', () => {
@@ -98,5 +87,7 @@ test.describe('of a collaboration', () => {
 
   test.afterAll(() => page.context().close());
 
-  for (const address of inside) test(address, () => look(page, address));
+  for (const screen of [...labScreens, ...openScreens.filter((one) => one.includes('{'))]) {
+    test(screen, () => look(page, screen));
+  }
 });
