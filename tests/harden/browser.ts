@@ -28,7 +28,7 @@ export async function openLaboratory(
   await page.goto('/sign-in');
   await page.getByLabel('E-mail').fill(person.email);
   await page.getByLabel('Password', { exact: true }).fill(person.password);
-  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.getByRole('button', { name: 'Sign in', exact: true }).click();
   await page.waitForURL('**/breakwater');
   return { browser, page, faults };
 }

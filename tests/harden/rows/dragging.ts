@@ -18,7 +18,7 @@ const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms));
 
 /** A survey of so many stars with maps, and an analysis of it with a finished run. */
 async function inventAnalysis(api: Api, stars: number): Promise<string> {
-  const survey = oneSurvey('DUNLIN', stars);
+  const survey = oneSurvey('KNOT', stars);
   const { id } = await api.post<{ id: string }>('surveys', { name: survey.name, band: 'H' });
   const files = [
     ['targets', targetsFile(survey)],
@@ -26,7 +26,7 @@ async function inventAnalysis(api: Api, stars: number): Promise<string> {
   ] as const;
   for (const [kind, text] of files) {
     const bytes = new TextEncoder().encode(text);
-    const sent = await api.upload(kind, survey.slug, `dunlin-${kind}.csv`, bytes);
+    const sent = await api.upload(kind, survey.slug, `knot-${kind}.csv`, bytes);
     await api.store(sent.id);
   }
   const { recipe } = await api.read<{ recipe: Record<string, unknown> }>('analyses/A-1');
