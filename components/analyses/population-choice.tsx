@@ -1,13 +1,14 @@
 'use client';
 
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
+import { reachesBeyond } from '@/components/populations/reaches-beyond';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { SelectField } from '@/components/ui/select-field';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
-import type { ListedDefinition, ListedPopulation } from '@/lib/schemas/populations';
+import type { ListedPopulation } from '@/lib/schemas/populations';
 
 interface PopulationChoiceProps {
   collaboration: string;
@@ -77,22 +78,5 @@ export function PopulationChoice(props: PopulationChoiceProps) {
         </div>
       )}
     </section>
-  );
-}
-
-/** Whether the ranges pass the maps; those of a mass ratio may, as each star has its own. */
-export function reachesBeyond(
-  definition: ListedDefinition,
-  grid: { massMjup: ArrayLike<number>; semiMajorAxisAu: ArrayLike<number> },
-): boolean {
-  const { massMjup, semiMajorAxisAu } = grid;
-  const isMassBeyond =
-    definition.form === 'mass-ratio' ||
-    definition.massMinMjup < massMjup[0] ||
-    definition.massMaxMjup > massMjup[massMjup.length - 1];
-  return (
-    isMassBeyond ||
-    definition.semiMajorAxisMinAu < semiMajorAxisAu[0] ||
-    definition.semiMajorAxisMaxAu > semiMajorAxisAu[semiMajorAxisAu.length - 1]
   );
 }

@@ -1,7 +1,6 @@
 'use client';
 
 import { useState } from 'react';
-import { reachesBeyond } from '@/components/analyses/population-choice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAction } from '@/components/ui/text-action';
@@ -11,6 +10,7 @@ import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { BuilderSetting } from './builder-setting';
 import { type LawDefinition, partsOf } from './law-parts';
+import { reachesBeyond } from './reaches-beyond';
 import { RangeWords, ScalingWords, ShapeWords } from './shape-words';
 
 interface InWordsProps {

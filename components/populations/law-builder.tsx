@@ -21,7 +21,6 @@ import { PopulationAlone } from './population-alone';
 import { SavePopulation } from './save-population';
 import { spreadOf } from './spread';
 import { type Preview, usePreview } from './use-preview';
-import { VersionList } from './version-list';
 
 /** These wait for the maps of a run, or stand below what does. */
 const PopulationPreview = dynamic(
@@ -30,6 +29,7 @@ const PopulationPreview = dynamic(
 );
 const PlaneSection = dynamic(async () => (await import('./plane-section')).PlaneSection);
 const AgainstVersion = dynamic(async () => (await import('./against-version')).AgainstVersion);
+const VersionList = dynamic(async () => (await import('./version-list')).VersionList);
 
 function PreviewWaits() {
   return (
