@@ -69,7 +69,7 @@ export const ResultSections = memo(function ResultSections(props: ResultSections
                   label="Copy"
                   align="right"
                   of={`the ${describeLevel(level)} limit`}
-                  make={() =>
+                  make={async () =>
                     documentOfShown({ run, inputs, result, shown, row: { level, limit } })
                   }
                 />

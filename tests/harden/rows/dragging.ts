@@ -14,7 +14,7 @@ const MOST_P95_MS = 1.5 * (1000 / 60);
 const MOST_DROPPED = 0.05;
 const starCount = () => Number(process.env.HARDEN_STARS ?? 500);
 
-const pause = (ms: number) => new Promise((resolve) => setTimeout(resolve, ms));
+const pause = (ms: number) => new Promise<void>((resolve) => setTimeout(resolve, ms));
 
 /** A survey of so many stars with maps, and an analysis of it with a finished run. */
 async function inventAnalysis(api: Api, stars: number): Promise<string> {
