@@ -1,5 +1,5 @@
 import { readFile } from 'node:fs/promises';
-import { Op, type Transaction, UniqueConstraintError } from 'sequelize';
+import { Op, QueryTypes, type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, InputError, NotFound } from '@/lib/errors';
@@ -12,7 +12,7 @@ import {
   type UploadView,
   uploadSettingsSchema,
 } from '@/lib/schemas/uploads';
-import { database, inTransaction, PersonRow, SurveyRow, UploadRow } from '@/models';
+import { database, inTransaction, SurveyRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
 import { behindRow, type PageAsked } from './behind-row';
 import { keepMapping } from './column-memory';
@@ -22,36 +22,57 @@ import { noteChanges, takeStanding } from './intake/changes';
 import { refuseShared } from './sharing/shared-surveys';
 import { findSurvey, isLead } from './surveys';
 
-export async function describeUpload(row: UploadRow): Promise<UploadView> {
-  const [survey, person, withdrawer, version] = await Promise.all([
-    row.surveyId ? SurveyRow.findByPk(row.surveyId) : null,
-    row.uploadedBy ? PersonRow.findByPk(row.uploadedBy) : null,
-    row.withdrawnBy ? PersonRow.findByPk(row.withdrawnBy) : null,
-    versionOf(row),
-  ]);
-  return {
-    id: row.id,
-    kind: row.kind as UploadView['kind'],
-    survey: survey?.slug ?? null,
-    fileName: row.fileName,
-    byteLength: Number(row.byteLength),
-    sha256: row.sha256,
-    state: row.state as UploadView['state'],
-    settings: row.settings as UploadSettings,
-    report: row.report as unknown as UploadReport,
-    uploadedBy: person?.name ?? null,
-    createdAt: row.createdAt.toISOString(),
-    storedAt: row.storedAt?.toISOString() ?? null,
-    version,
-    withdrawnBy: withdrawer?.name ?? null,
-    withdrawnAt: row.withdrawnAt?.toISOString() ?? null,
-  };
+interface Beside {
+  id: string;
+  survey: string | null;
+  uploadedBy: string | null;
+  withdrawnBy: string | null;
+  /** The how-manieth file of its kind that the survey stored; null for one that is not stored. */
+  version: number | null;
 }
 
-/** The how-manieth file of its kind that the survey stored; null for one that is not stored. */
-async function versionOf({ surveyId, kind, storedAt }: UploadRow): Promise<number | null> {
-  if (!surveyId || !storedAt) return null;
-  return UploadRow.count({ where: { surveyId, kind, storedAt: { [Op.lte]: storedAt } } });
+/** What stands in other tables, for all of them at once. */
+function readBeside(ids: string[]): Promise<Beside[]> {
+  return database().query<Beside>(
+    `select u.id, s.slug as survey, p.name as "uploadedBy", w.name as "withdrawnBy",
+       case when u.stored_at is not null and u.survey_id is not null then
+         (select count(*)::int from upload o
+          where o.survey_id = u.survey_id and o.kind = u.kind and o.stored_at <= u.stored_at)
+       end as version
+     from upload u left join survey s on s.id = u.survey_id
+       left join person p on p.id = u.uploaded_by left join person w on w.id = u.withdrawn_by
+     where u.id = any($1::uuid[])`,
+    { bind: [ids], type: QueryTypes.SELECT },
+  );
+}
+
+async function describeUploads(rows: UploadRow[]): Promise<UploadView[]> {
+  const beside = new Map((await readBeside(rows.map(({ id }) => id))).map((one) => [one.id, one]));
+  return rows.map((row) => {
+    const { survey, uploadedBy, withdrawnBy, version } = beside.get(row.id) ?? {};
+    return {
+      id: row.id,
+      kind: row.kind as UploadView['kind'],
+      survey: survey ?? null,
+      fileName: row.fileName,
+      byteLength: Number(row.byteLength),
+      sha256: row.sha256,
+      state: row.state as UploadView['state'],
+      settings: row.settings as UploadSettings,
+      report: row.report as unknown as UploadReport,
+      uploadedBy: uploadedBy ?? null,
+      createdAt: row.createdAt.toISOString(),
+      storedAt: row.storedAt?.toISOString() ?? null,
+      version: version ?? null,
+      withdrawnBy: withdrawnBy ?? null,
+      withdrawnAt: row.withdrawnAt?.toISOString() ?? null,
+    };
+  });
+}
+
+export async function describeUpload(row: UploadRow): Promise<UploadView> {
+  const [view] = await describeUploads([row]);
+  return view;
 }
 
 /** Looked at before storing and not after. */
@@ -216,7 +237,7 @@ export async function listUploads(
     limit,
     offset,
   });
-  return Promise.all(rows.map(async (row) => withoutPreview(await describeUpload(row))));
+  return (await describeUploads(rows)).map(withoutPreview);
 }
 
 /** The original bytes, as they came. */

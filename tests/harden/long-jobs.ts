@@ -3,6 +3,8 @@ import type { Api } from './api';
 
 const MOST_SURVEYS = 100_000;
 const START_S = 60;
+/** So many wait behind those that compute, since one may end while answers are timed. */
+const SPARE = 6;
 
 interface Job {
   id: string;
@@ -24,10 +26,10 @@ export class LongJobs {
 
   constructor(private readonly api: Api) {}
 
-  /** Sees to it that so many compute, in the place of those that have ended. */
+  /** Sees to it that so many compute, and that others follow them. */
   async keep(count: number): Promise<void> {
     this.ids = (await this.read()).filter(isOpen).map(({ id }) => id);
-    while (this.ids.length < count) this.ids.push(await this.ask());
+    while (this.ids.length < count + SPARE) this.ids.push(await this.ask());
     for (let s = 0; s < START_S; s++) {
       if ((await this.computing()) === count) return;
       await pause(1000);
@@ -41,7 +43,8 @@ export class LongJobs {
   }
 
   async stop(): Promise<void> {
-    for (const id of this.ids) await this.api.post(`jobs/${id}/cancel`, {}).catch(() => null);
+    for (const id of [...this.ids].reverse())
+      await this.api.post(`jobs/${id}/cancel`, {}).catch(() => null);
     while ((await this.read()).some(isOpen)) await pause(500);
   }
 
