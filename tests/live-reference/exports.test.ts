@@ -33,6 +33,6 @@ describe('files of a run', () => {
       for (const ending of ['.csv', '.ecsv', '.vot']) expect(read.get(ending), ending).toBe(6);
       expect(read.get('.fits')).toBe(8);
       for (const ending of ['.npz', '.h5']) expect(read.get(ending), ending).toBe(2);
-    });
+    }, 180_000);
   }
 });
