@@ -157,7 +157,8 @@ export function CombineScreen({
             {preview ? (
               <CombinationReport preview={preview} />
             ) : (
-              <p className="text-ink3">
+              // What follows stays out of sight, so that nothing jumps once the counts are there.
+              <p className={`text-ink3 ${definition ? 'min-h-screen' : ''}`}>
                 {definition ? 'The surveys are being laid together.' : 'Choose two surveys.'}
               </p>
             )}
