@@ -95,7 +95,8 @@ export async function addressOf(request: APIRequestContext, screen: string): Pro
   const name = /\{(\w+)\}/.exec(screen)?.[1];
   if (name === undefined) return screen;
   const { route, list, field = 'id' } = ids[name];
-  const answer = await request.get(`/api/v1/collaborations${LAB}/${route}`);
+  // The server may close a connection that rested just as it is taken up again.
+  const answer = await request.get(`/api/v1/collaborations${LAB}/${route}`, { maxRetries: 2 });
   const id = (await answer.json())[list]?.[0]?.[field];
   if (typeof id !== 'string') throw new Error(`${route} tells no ${name}`);
   return screen.replace(`{${name}}`, id);
