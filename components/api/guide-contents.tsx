@@ -80,7 +80,7 @@ const rules = [
   ],
   [
     'Long lists',
-    'limit is 1 to 500. Link: rel="next" leads on and is absent on the last page; what is added meanwhile may come twice.',
+    'limit is 1 to 500. Link: rel="next" leads on and is absent on the last page. A list goes on from its last row, so that each row comes once; where that row is gone the answer is 400 cursor-gone. Jobs, whose order moves, go on by count.',
   ],
 ] as const;
 
