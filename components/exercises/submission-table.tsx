@@ -68,7 +68,10 @@ export function SubmissionTable(props: SubmissionTableProps) {
                     </Cell>
                   )}
                   <Cell className="whitespace-nowrap">
-                    <Link href={`/${collaboration}/analyses/${submission.run.analysis}`}>
+                    <Link
+                      className="underline underline-offset-3"
+                      href={`/${collaboration}/analyses/${submission.run.analysis}`}
+                    >
                       {submission.run.analysis}
                     </Link>
                     , run {submission.run.number}
