@@ -1,15 +1,7 @@
-import { createHash, randomBytes } from 'node:crypto';
+import { randomBytes } from 'node:crypto';
 import { type Role, roleSchema } from '@/lib/schemas/common';
-import { encodeMap } from '@/lib/sensitivity';
-import {
-  CompletenessMapRow,
-  CoolingTableRow,
-  database,
-  RunRow,
-  type SurveyRow,
-  type TargetRow,
-} from '@/models';
-import { buildExportRun, mapOfStar } from './export-run';
+import { CoolingTableRow, database, type RunRow, type SurveyRow } from '@/models';
+import { buildMap, buildRun, buildUpload, insert, secret } from './lab-rows';
 import {
   addMember,
   createCollaborationWith,
@@ -34,99 +26,6 @@ export interface WholeLab {
   collaboration: TestCollaboration;
   people: Record<Role | 'lead', TestPerson>;
   ids: LabIds;
-}
-
-const sha256 = (text: string) => createHash('sha256').update(text).digest('hex');
-const secret = () => sha256(randomBytes(16).toString('hex'));
-
-/** One row of a table past its model; columns by their names in the database. */
-async function insert(table: string, row: Record<string, unknown>): Promise<string> {
-  const columns = Object.keys(row);
-  const marks = columns.map((_, i) => `$${i + 1}`);
-  const [rows] = await database().query(
-    `insert into ${table} (${columns}) values (${marks}) returning *`,
-    { bind: Object.values(row) },
-  );
-  return (rows[0] as { id: string }).id;
-}
-
-const FILE = 'name,distance_pc\nStar of a file,12\n';
-
-async function buildUpload(surveyId: string, collaborationId: string, state: string) {
-  const id = await insert('upload', {
-    collaboration_id: collaborationId,
-    survey_id: surveyId,
-    kind: 'targets',
-    file_name: 'stars.csv',
-    byte_length: FILE.length,
-    sha256: sha256(FILE),
-    state,
-    stored_at: state === 'stored' ? new Date() : null,
-  });
-  await insert('upload_part', { upload_id: id, part_number: 0, bytes: Buffer.from(FILE) });
-  return id;
-}
-
-const computed = buildExportRun();
-
-/** The map that each star of the run names, on the run's own grid. */
-async function buildMap(collaborationId: string, target: TargetRow) {
-  const { grid, stars } = computed.inputs;
-  const nodeValues = Buffer.from(encodeMap(mapOfStar(0)).buffer);
-  const map = await CompletenessMapRow.create({
-    collaborationId,
-    digest: stars[0].mapDigest,
-    origin: 'computed',
-    engineVersion: '1',
-    ...grid,
-    nodeValues,
-    checksum: createHash('sha256').update(nodeValues).digest('hex'),
-    inputs: {},
-  });
-  await target.update({ mapId: map.id, mapState: 'ready' });
-  return map.id;
-}
-
-/** A finished run with the result of the worker's own function, under ids of this collaboration. */
-async function buildRun(
-  collaborationId: string,
-  analysis: { id: string; recipe: RunRow['recipe'] },
-  { personId, map }: { personId: string; map: string },
-) {
-  const { result, seed, engineVersion, resultDigest } = computed;
-  const jobId = await insert('job', {
-    collaboration_id: collaborationId,
-    kind: 'compute-run',
-    status: 'done',
-    requested_by: personId,
-  });
-  const run = await RunRow.create({
-    collaborationId,
-    analysisId: analysis.id,
-    number: 1,
-    jobId,
-    recipe: analysis.recipe,
-    seed,
-    engineVersion,
-    inputs: {
-      ...computed.inputs,
-      stars: computed.inputs.stars.map((star) => ({ ...star, mapId: map })),
-    },
-    inputsDigest: resultDigest,
-    result,
-    resultDigest,
-    createdBy: personId,
-    finishedAt: new Date(),
-  });
-  await insert('frozen_run', {
-    collaboration_id: collaborationId,
-    run_id: run.id,
-    checks: '[]',
-    snapshot: Buffer.from('bytes'),
-    snapshot_sha256: secret(),
-    frozen_by_name: 'R. Castellan',
-  });
-  return run;
 }
 
 async function buildSky(team: TestCollaboration, leadId: string, name: string) {
