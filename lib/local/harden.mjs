@@ -57,7 +57,8 @@ async function measureRow(/** @type {Row} */ row, /** @type {HardenProduct} */ p
     const measured = await row.measure(bench);
     return { ...measured, seconds: (Date.now() - start) / 1000 };
   } catch (error) {
-    const words = error instanceof LauncherProblem ? error.message : error.stack;
+    const cause = error.cause ? `\nbecause of ${error.cause.stack ?? error.cause}` : '';
+    const words = error instanceof LauncherProblem ? error.message : `${error.stack}${cause}`;
     const seconds = (Date.now() - start) / 1000;
     return { isMet: false, figure: 'not measured', details: {}, notes: [words], seconds };
   } finally {

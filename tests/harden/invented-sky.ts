@@ -101,13 +101,20 @@ type InventedStar = StarInputs & {
 
 const gaiaOf = (star: number) => String(4_000_000_000_000_000_000n + 7919n * BigInt(star + 1));
 
+/** So that six standard errors stay within the ages of the demonstration's cooling tables. */
+const TABLE_MYR = { min: 1, max: 4000 };
+const widestSpread = (medianMyr: number) =>
+  Math.min(medianMyr / TABLE_MYR.min, TABLE_MYR.max / medianMyr) ** (1 / 6);
+
 export function targetsFile(survey: InventedSurvey): string {
   const rows = survey.entries.map((entry) => {
     const { star, by } = entry;
     const { hostMag, age, distance } = inventStar(star) as InventedStar;
     const isOld = by === 'position';
     const place = isOld ? oldPlaceOf(star) : placeOf(star);
-    const { medianMyr, lowerMyr = medianMyr, upperMyr = medianMyr } = age;
+    const { medianMyr } = age;
+    const spread = Math.min((age.upperMyr ?? medianMyr) / medianMyr, widestSpread(medianMyr));
+    const [lowerMyr, upperMyr] = [medianMyr / spread, medianMyr * spread];
     return {
       name: nameIn(survey, entry),
       other_names: by === 'name' ? baseName(star) : null,
