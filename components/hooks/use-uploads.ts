@@ -21,9 +21,11 @@ export function useUploads(collaboration: string, survey: string, fallback?: Upl
   );
 }
 
+/** From here on a file goes in parts, and goes on where it stopped. */
+const IN_PARTS_BYTES = 8 * 2 ** 20;
+
 async function digestOf(file: File): Promise<string | null> {
-  // The digest needs the whole file in memory; beyond this size the length alone is checked.
-  if (file.size > 64 * 2 ** 20 || !globalThis.crypto?.subtle) return null;
+  if (!globalThis.crypto?.subtle) return null;
   const hash = new Uint8Array(await crypto.subtle.digest('SHA-256', await file.arrayBuffer()));
   return btoa(String.fromCharCode(...hash));
 }
@@ -61,7 +63,7 @@ function post(
 
 /**
  * Sends a file for reading; nothing of it is stored for the laboratory before `storeUpload`. The
- * same file sent again takes the place of the one that waits.
+ * same file sent again takes the place of the one that waits; a large one goes on where it stopped.
  *
  * @param onSent told the share of the file that has gone, 0 to 1
  * @throws ApiProblem with the place of each fault
@@ -72,18 +74,27 @@ export async function sendUpload(
   about: { kind: UploadKindName; survey?: string; settings?: UploadSettings },
   onSent: (share: number) => void = () => {},
 ): Promise<UploadView> {
-  const path = withQuery(apiPath(collaboration, 'uploads'), {
+  const query = {
     kind: about.kind,
     survey: about.survey,
     name: file.name,
     settings: about.settings && JSON.stringify(about.settings),
-  });
+  };
+  const address = apiPath(collaboration, 'uploads');
+  if (file.size > IN_PARTS_BYTES) {
+    const { sendInParts } = await import('./send-in-parts');
+    const parts = await sendInParts(collaboration, file, about, onSent);
+    const path = withQuery(address, { ...query, unfinished: parts.id });
+    const view = await request(path, answer('uploadSchema'), { method: 'POST' });
+    await parts.forget();
+    return view;
+  }
   const digest = await digestOf(file);
   const headers = {
     'content-type': 'application/octet-stream',
     ...(digest === null ? {} : { 'repr-digest': `sha-256=:${digest}:` }),
   };
-  const response = await post(path, file, headers, onSent);
+  const response = await post(withQuery(address, query), file, headers, onSent);
   if (!response.ok) throw await readProblem(response);
   return (await answer('uploadSchema')()).parse(await response.json());
 }

@@ -11,6 +11,8 @@ export interface ExampleRequest {
   body?: unknown;
   /** Name of the file that is sent as it is, and its content type. */
   file?: { name: string; type: string };
+  /** Of the route's own. */
+  headers: [name: string, value: string][];
   /** A write that may be sent again without being done twice. */
   hasKey: boolean;
   answer: 'json' | 'file' | 'nothing';
@@ -130,6 +132,7 @@ export function exampleRequest(one: ApiRoute, origin: string): ExampleRequest | 
     address: `${origin}${address}${queryOf(one)}`,
     isSigned: one.access !== 'open',
     body,
+    headers: Object.entries(one.headers ?? {}).map(([name, { example }]) => [name, example]),
     file: one.isUpload ? { name: 'the-file', type } : undefined,
     hasKey: takesKey(one),
     answer: one.answer ? 'json' : one.files ? 'file' : 'nothing',
@@ -145,6 +148,7 @@ export function asCurl({
   isSigned,
   body,
   file,
+  headers,
   hasKey,
   answer,
 }: ExampleRequest): string {
@@ -152,6 +156,7 @@ export function asCurl({
   if (method !== 'GET') words.push(`-X ${method}`);
   if (isSigned) words.push('-H "Authorization: Bearer $RAREBOUND_TOKEN"');
   if (hasKey) words.push('-H "Idempotency-Key: $(uuidgen)"');
+  for (const [name, value] of headers) words.push(`-H ${inShell(`${name}: ${value}`)}`);
   if (body !== undefined) {
     words.push("-H 'Content-Type: application/json'", `-d ${inShell(JSON.stringify(body))}`);
   }
@@ -188,6 +193,7 @@ export function asPython(given: ExampleRequest): string {
   const headers = [
     ...(isSigned ? ['"Authorization": "Bearer " + os.environ["RAREBOUND_TOKEN"]'] : []),
     ...(hasKey ? ['"Idempotency-Key": str(uuid.uuid4())'] : []),
+    ...given.headers.map(([name, value]) => `${JSON.stringify(name)}: ${JSON.stringify(value)}`),
     ...(body !== undefined ? ['"Content-Type": "application/json"'] : []),
     ...(file ? [`"Content-Type": ${JSON.stringify(file.type)}`] : []),
   ];

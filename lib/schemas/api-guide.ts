@@ -150,14 +150,18 @@ function contentOf(schema: Schema | undefined): GuideField[] {
 function refusalsOf(one: ApiRoute): number[] {
   const isWrite = one.method !== 'get';
   const may = {
-    400: one.query !== undefined || one.body !== undefined || takesKey(one),
+    400:
+      one.query !== undefined ||
+      one.body !== undefined ||
+      one.headers !== undefined ||
+      takesKey(one),
     401: one.access !== 'open',
     403: one.access !== 'open',
     404: one.path.includes('{'),
     409: isWrite,
-    412: takesIfMatch(one, apiRoutes),
+    412: takesIfMatch(one, apiRoutes) || one.headers !== undefined,
     413: one.body !== undefined || one.isUpload,
-    415: one.body !== undefined,
+    415: one.body !== undefined || one.uploadType !== undefined,
     422: one.body !== undefined || one.isUpload || takesKey(one),
     429: one.access !== 'session',
   };

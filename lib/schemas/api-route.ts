@@ -15,6 +15,8 @@ export interface ApiRoute {
   isUpload?: boolean;
   /** Content type of that file, where it is a fixed one. */
   uploadType?: string;
+  /** Headers that it asks for besides those of all routes: what each says, with an example. */
+  headers?: Readonly<Record<string, { says: string; example: string }>>;
   status?: number;
   answer?: ZodType;
   /** Content types of an answer that is a file or bytes, besides JSON. */

@@ -10,7 +10,12 @@ way 409.`.replace(/\n/g, ' ');
 
 /** The headers that a request may carry, as it is said of each operation. */
 export function requestHeadersOf(one: ApiRoute, all: readonly ApiRoute[]) {
+  const own = Object.entries(one.headers ?? {}).map(([name, { says }]) => [
+    name,
+    z.string().describe(says),
+  ]);
   const known = {
+    ...Object.fromEntries(own),
     ...(one.method === 'get' &&
       one.answer && { 'If-None-Match': header('An ETag that you hold: 304 when it is the same') }),
     ...(takesIfMatch(one, all) && {

@@ -19,12 +19,15 @@ import {
 import {
   columnMappingSchema,
   dependentsSchema,
+  unfinishedFileSchema,
+  unfinishedQuerySchema,
   uploadQuerySchema,
   uploadSchema,
   uploadSettingsSchema,
 } from './uploads';
 
 const bytes = ['application/octet-stream'];
+const part = { isUpload: true, uploadType: 'application/offset+octet-stream' } as const;
 
 /** Surveys, their targets and maps, and the files that bring them. */
 export const surveyRoutes: ApiRoute[] = [
@@ -89,6 +92,30 @@ export const surveyRoutes: ApiRoute[] = [
     status: 201,
     answer: uploadSchema,
   }),
+  route(
+    'post',
+    `${team}/unfinished-files`,
+    'write',
+    'Begin a file that is sent in parts (tus 1.0)',
+    {
+      ...part,
+      query: unfinishedQuerySchema,
+      headers: { 'Upload-Length': { says: 'Bytes of the whole file', example: '52428800' } },
+      status: 201,
+      answer: unfinishedFileSchema,
+    },
+  ),
+  route(
+    'get',
+    `${team}/unfinished-files/{unfinished}`,
+    'write',
+    'How much of a file has come: the header Upload-Offset',
+  ),
+  route('patch', `${team}/unfinished-files/{unfinished}`, 'write', 'Send the next part of a file', {
+    ...part,
+    headers: { 'Upload-Offset': { says: 'Bytes that have come before this part', example: '0' } },
+  }),
+  route('delete', `${team}/unfinished-files/{unfinished}`, 'write', 'Give a file in parts up'),
   route('get', `${team}/uploads/{upload}`, 'read', 'One upload and its report', {
     answer: uploadSchema,
   }),

@@ -20,7 +20,23 @@ export const uploadQuerySchema = z.strictObject({
   name: lineSchema(200),
   /** Settings for the first reading, as JSON. */
   settings: z.string().max(100_000).optional(),
+  /** A file that came in parts, whole by now: the body stays empty then. */
+  unfinished: idSchema.optional(),
 });
+export type UploadQuery = z.infer<typeof uploadQuerySchema>;
+
+/** The query of POST …/unfinished-files, with what the header Upload-Length says. */
+export const unfinishedQuerySchema = uploadQuerySchema.pick({ kind: true, survey: true });
+export type UnfinishedFileRequest = z.infer<typeof unfinishedQuerySchema> & { byteLength: number };
+
+/** A file that is sent part by part, by the core of the tus protocol 1.0 with creation. */
+export const unfinishedFileSchema = z.object({
+  id: idSchema,
+  byteLength: z.number(),
+  /** Bytes that have come: the offset at which the next part begins. */
+  received: z.number(),
+});
+export type UnfinishedFileView = z.infer<typeof unfinishedFileSchema>;
 
 /** What a person may decide between reading and storing; each change reads the file again. */
 export const uploadSettingsSchema = z.strictObject({

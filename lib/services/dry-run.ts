@@ -22,7 +22,7 @@ import type { Plan } from './intake/plan';
 import { planSystems } from './intake/systems';
 import { takeBackWithdrawn } from './intake/take-back';
 import { planTargets } from './intake/targets';
-import { type LoadBytes, readOnThread } from './reading';
+import { type KeptFile, readOnThread } from './reading';
 
 /** A file on its way in: what it holds, for which survey, and how a person wants it read. */
 export interface Source {
@@ -82,13 +82,13 @@ async function contextOf(source: Source): Promise<ReadContext> {
 }
 
 /** Reads a file; one of companions twice, as its notes need the maps of the stars that it names. */
-async function readSource(source: Source, load: LoadBytes): Promise<ReadResult> {
+async function readSource(source: Source, file: KeptFile): Promise<ReadResult> {
   const context = await contextOf(source);
-  const read = await readOnThread(load, context);
+  const read = await readOnThread(file, context);
   if (!source.survey || !read.ok || read.kind !== 'companions') return read;
   const named = new Set(read.records.map(({ target }) => target));
   const maps = await mapsByName(source.survey, [...named]);
-  return maps.size === 0 ? read : readOnThread(load, { ...context, maps });
+  return maps.size === 0 ? read : readOnThread(file, { ...context, maps });
 }
 
 async function planOf(
@@ -134,14 +134,14 @@ interface Reading {
 }
 
 /** Where the person has mapped nothing, the mapping of the last file with these headings holds. */
-async function readAsBefore(source: Source, load: LoadBytes): Promise<Reading> {
-  const read = await readSource(source, load);
+async function readAsBefore(source: Source, file: KeptFile): Promise<Reading> {
+  const read = await readSource(source, file);
   const isOwn = source.settings.columnMap !== undefined;
   const remembered = isOwn ? null : await recallMapping(source.survey, source.kind, read.columns);
   if (!remembered) return { read, source, remembered };
   const settings = { ...source.settings, columnMap: remembered.columnMap };
   const mapped = { ...source, settings };
-  return { read: await readSource(mapped, load), source: mapped, remembered };
+  return { read: await readSource(mapped, file), source: mapped, remembered };
 }
 
 function describeMapping(columnMap: Record<string, string>): Note {
@@ -157,8 +157,8 @@ function describeMapping(columnMap: Record<string, string>): Note {
  *
  * @throws InputError with every fault and its place
  */
-export async function dryRun(actor: Actor, given: Source, load: LoadBytes): Promise<DryRun> {
-  const { read, source, remembered } = await readAsBefore(given, load);
+export async function dryRun(actor: Actor, given: Source, file: KeptFile): Promise<DryRun> {
+  const { read, source, remembered } = await readAsBefore(given, file);
   if (!read.ok) {
     const faults = read.faults.map((fault) => ({ file: source.fileName, ...fault }));
     // A file that is too large as a whole; an array that is too large inside one has its place.

@@ -10,10 +10,13 @@ import { InputError, LabError } from '@/lib/errors';
 import { uploadLimits } from '@/lib/formats';
 import { database } from '@/models';
 import { copyRows } from '@/models/copy-rows';
-import { incomingFolder, noRoomFor } from './disk';
+import { noRoomFor, sweptFolder } from './disk';
 
 /** Parts of this size keep memory flat, however large the file is. */
 const PART_BYTES = 1 << 20;
+
+/** No upload is written to or read for so long: the server that received this one was killed. */
+const ABANDONED_MS = 60 * 60_000;
 
 export interface IncomingFile {
   path: string;
@@ -23,7 +26,7 @@ export interface IncomingFile {
 }
 
 /** The SHA-256 that the sender states, in hex: `Repr-Digest: sha-256=:<base64>:` (RFC 9530). */
-function statedDigest(headers: Headers): string | null {
+export function statedDigest(headers: Headers): string | null {
   const field = headers.get('repr-digest');
   if (field === null) return null;
   const found = /(?:^|,)\s*sha-256=:([A-Za-z0-9+/=]+):/.exec(field);
@@ -51,7 +54,7 @@ function statedDigest(headers: Headers): string | null {
 export async function receiveFile(request: Request): Promise<IncomingFile> {
   const stated = statedDigest(request.headers);
   const statedLength = request.headers.get('content-length');
-  const folder = await incomingFolder();
+  const folder = await sweptFolder('incoming', ABANDONED_MS);
   const filePath = path.join(folder, randomUUID());
   const discard = () => rm(filePath, { force: true });
   const hash = createHash('sha256');
@@ -84,13 +87,7 @@ export async function receiveFile(request: Request): Promise<IncomingFile> {
     }
     const sha256 = hash.digest('hex');
     if (stated !== null && stated !== sha256) {
-      throw new InputError({
-        code: 'checksum',
-        item: 'header "Repr-Digest"',
-        found: `the SHA-256 ${sha256}`,
-        expected: stated,
-        hint: 'Nothing is stored; send the file again',
-      });
+      throw digestFault(sha256, stated);
     }
     return { path: filePath, byteLength, sha256, discard };
   } catch (error) {
@@ -110,7 +107,16 @@ export async function receiveFile(request: Request): Promise<IncomingFile> {
   }
 }
 
-function tooLarge(bytes: number): InputError {
+export const digestFault = (sha256: string, stated: string) =>
+  new InputError({
+    code: 'checksum',
+    item: 'header "Repr-Digest"',
+    found: `the SHA-256 ${sha256}`,
+    expected: stated,
+    hint: 'Nothing is stored; send the file again',
+  });
+
+export function tooLarge(bytes: number): InputError {
   return new InputError(
     {
       code: 'too-large',

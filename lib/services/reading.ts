@@ -7,64 +7,90 @@ import type { ReadContext, ReadResult } from '@/lib/formats';
 /** formats: a file is read within 60 s and 1 GiB, or refused. */
 const LONGEST_MS = 60_000;
 const MOST_MEGABYTES = 1024;
-const THREADS = 2;
 
-const holder = globalThis as typeof globalThis & {
-  rareboundReaders?: Piscina;
+/** From here on a file is read alone, on a thread that ends with it and gives its memory back. */
+const LARGE_BYTES = 8 << 20;
+const lanes = {
+  small: { threads: 2, idleMs: 30_000 },
+  large: { threads: 1, idleMs: 0 },
+} as const;
+type Lane = keyof typeof lanes;
+
+interface Readers {
+  pool: Piscina;
   /** Settles with each file that is being read. */
-  rareboundReading?: Set<Promise<void>>;
-};
+  reading: Set<Promise<void>>;
+}
 
-function readers(): Piscina {
-  holder.rareboundReaders ??= new Piscina({
+const holder = globalThis as typeof globalThis & { rareboundReaders?: Map<Lane, Readers> };
+
+function readersOf(lane: Lane): Readers {
+  holder.rareboundReaders ??= new Map();
+  const there = holder.rareboundReaders.get(lane);
+  if (there) return there;
+  const { threads, idleMs } = lanes[lane];
+  const pool = new Piscina({
     filename: path.resolve(config().bundleDirectory, 'workers/compute/read-upload.js'),
     minThreads: 0,
-    maxThreads: THREADS,
-    idleTimeout: 30_000,
+    maxThreads: threads,
+    idleTimeout: idleMs,
     resourceLimits: { maxOldGenerationSizeMb: MOST_MEGABYTES },
   });
-  return holder.rareboundReaders;
+  const made = { pool, reading: new Set<Promise<void>>() };
+  holder.rareboundReaders.set(lane, made);
+  return made;
 }
 
 /** Ends the reading threads; the next file starts new ones. */
 export async function closeReaders(): Promise<void> {
-  await holder.rareboundReaders?.destroy();
+  const all = [...(holder.rareboundReaders?.values() ?? [])];
   holder.rareboundReaders = undefined;
+  await Promise.all(all.map(({ pool }) => pool.destroy()));
 }
 
-/** Brings the bytes of a file, anew at each call: they move to the thread that reads them. */
-export type LoadBytes = () => Promise<Uint8Array>;
+/** A file that lies on the disk or in the database. */
+export interface KeptFile {
+  byteLength: number;
+  /** Brings its bytes, anew at each call: they move to the thread that reads them. */
+  load(): Promise<Uint8Array>;
+}
 
-/** Files that wait for a thread wait on the disk, not in memory. */
-async function withThread<Answer>(work: () => Promise<Answer>): Promise<Answer> {
-  while (holder.rareboundReading && holder.rareboundReading.size >= THREADS) {
-    await Promise.race(holder.rareboundReading);
-  }
-  holder.rareboundReading ??= new Set();
-  const running = work();
+/** Files that wait for a thread wait where they lie, not in memory. */
+async function withThread<Answer>(
+  lane: Lane,
+  work: (pool: Piscina) => Promise<Answer>,
+): Promise<Answer> {
+  const { pool, reading } = readersOf(lane);
+  while (reading.size >= lanes[lane].threads) await Promise.race(reading);
+  const running = work(pool);
   const ended = running.then(
     () => undefined,
     () => undefined,
   );
-  holder.rareboundReading.add(ended);
+  reading.add(ended);
   try {
     return await running;
   } finally {
-    holder.rareboundReading.delete(ended);
+    reading.delete(ended);
   }
 }
 
 /** Reads a file on a thread of its own, so that a large or hostile one cannot hold up the pages. */
-export function readOnThread(load: LoadBytes, context: ReadContext): Promise<ReadResult> {
-  return withThread(async () => readBytes(await load(), context));
+export function readOnThread(file: KeptFile, context: ReadContext): Promise<ReadResult> {
+  const lane = file.byteLength < LARGE_BYTES ? 'small' : 'large';
+  return withThread(lane, async (pool) => readBytes(pool, await file.load(), context));
 }
 
-async function readBytes(bytes: Uint8Array, context: ReadContext): Promise<ReadResult> {
+async function readBytes(
+  pool: Piscina,
+  bytes: Uint8Array,
+  context: ReadContext,
+): Promise<ReadResult> {
   const isWhole = bytes.byteLength === bytes.buffer.byteLength;
   const own = isWhole ? bytes : new Uint8Array(bytes);
   const limit = AbortSignal.timeout(LONGEST_MS);
   try {
-    return (await readers().run(
+    return (await pool.run(
       { bytes: own, context },
       { signal: limit, transferList: [own.buffer as ArrayBuffer] },
     )) as ReadResult;

@@ -1,25 +1,19 @@
-import { readFile } from 'node:fs/promises';
-import { Op, QueryTypes, type Transaction, UniqueConstraintError } from 'sequelize';
+import { Op, QueryTypes, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { Conflict, InputError, NotFound } from '@/lib/errors';
+import { Conflict, NotFound } from '@/lib/errors';
 import type { UploadKind } from '@/lib/formats';
 import { enqueueMaps } from '@/lib/queue/enqueue';
 import { idSchema } from '@/lib/schemas/common';
-import {
-  type UploadReport,
-  type UploadSettings,
-  type UploadView,
-  uploadSettingsSchema,
-} from '@/lib/schemas/uploads';
+import type { UploadReport, UploadSettings, UploadView } from '@/lib/schemas/uploads';
 import { database, inTransaction, SurveyRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
 import { behindRow, type PageAsked } from './behind-row';
 import { keepMapping } from './column-memory';
 import { dryRun, type Source } from './dry-run';
-import { type IncomingFile, loadParts, receiveFile, storeParts } from './incoming-file';
+import { loadParts } from './incoming-file';
 import { noteChanges, takeStanding } from './intake/changes';
-import { refuseShared } from './sharing/shared-surveys';
+import type { KeptFile } from './reading';
 import { findSurvey, isLead } from './surveys';
 
 interface Beside {
@@ -81,114 +75,10 @@ function withoutPreview(upload: UploadView): UploadView {
   return { ...upload, report };
 }
 
-function parseSettings(text: string | undefined): UploadSettings {
-  if (text === undefined) return {};
-  let given: unknown;
-  try {
-    given = JSON.parse(text);
-  } catch {
-    throw new InputError(
-      { code: 'json-invalid', item: 'query "settings"', expected: 'a JSON object' },
-      { status: 400 },
-    );
-  }
-  const parsed = uploadSettingsSchema.safeParse(given);
-  if (parsed.success) return parsed.data;
-  const issue = parsed.error.issues[0];
-  throw new InputError(
-    { code: 'schema', item: `query "settings", ${issue.path.join('.')}`, message: issue.message },
-    { status: 400 },
-  );
-}
-
-async function surveyFor(
-  actor: Actor,
-  kind: UploadKind,
-  slug: string | undefined,
-): Promise<SurveyRow | null> {
-  if (kind === 'cooling-tables') {
-    demand(actor, 'import-cooling-table');
-    return null;
-  }
-  if (kind === 'systems') {
-    demand(actor, 'save-population', { isOwn: true });
-    return null;
-  }
-  if (slug === undefined) {
-    throw new InputError(
-      {
-        code: 'value-missing',
-        item: 'query "survey"',
-        found: 'nothing',
-        expected: 'the survey that the file belongs to',
-      },
-      { status: 400 },
-    );
-  }
-  const survey = await findSurvey(actor, slug);
-  demand(actor, 'import', { isLead: isLead(actor, survey) });
-  await refuseShared(survey);
-  return survey;
-}
-
-/** Receives a file, reads every line of it, and keeps it for a person to confirm. A refused file leaves no trace. */
-export async function receiveUpload(
-  actor: Actor,
-  query: { kind: UploadKind; survey?: string; name: string; settings?: string },
-  request: Request,
-): Promise<UploadView> {
-  const survey = await surveyFor(actor, query.kind, query.survey);
-  const source: Source = {
-    kind: query.kind,
-    fileName: query.name,
-    survey,
-    settings: parseSettings(query.settings),
-  };
-  const file: IncomingFile = await receiveFile(request);
-  try {
-    const { report, settings } = await dryRun(actor, source, () => readFile(file.path));
-    const row = await inTransaction((transaction) =>
-      keepFile(actor, { ...source, settings }, file, report, transaction),
-    );
-    return await describeUpload(row);
-  } finally {
-    await file.discard();
-  }
-}
-
-/**
- * The upload of these bytes: the one that is there already, where the same file was sent for the
- * same survey and kind and waits to be stored, else a new one.
- */
-async function keepFile(
-  actor: Actor,
-  { kind, survey, fileName, settings }: Source,
-  { sha256, byteLength, ...file }: IncomingFile,
-  report: UploadReport,
-  transaction: Transaction,
-): Promise<UploadRow> {
-  const place = {
-    collaborationId: actor.collaborationId,
-    surveyId: survey?.id ?? null,
-    kind,
-    sha256,
-    state: 'read',
-  };
-  const said = { fileName, settings, report: report as unknown as Record<string, unknown> };
-  // One after the other: two that come at once would both find no upload.
-  await database().query('select pg_advisory_xact_lock(hashtextextended($1, 0))', {
-    bind: [`${place.collaborationId} ${place.surveyId} ${kind} ${sha256}`],
-    transaction,
-  });
-  const there = await UploadRow.findOne({ where: place, transaction });
-  if (there) return there.update(said, { transaction });
-  const created = await UploadRow.create(
-    { ...place, ...said, byteLength, uploadedBy: actor.personId },
-    { transaction },
-  );
-  await storeParts(created.id, { sha256, byteLength, ...file }, transaction);
-  return created;
-}
+const keptFile = (row: UploadRow): KeptFile => ({
+  byteLength: Number(row.byteLength),
+  load: () => loadParts(row),
+});
 
 export async function findUpload(
   actor: Actor,
@@ -263,7 +153,7 @@ export async function changeUpload(
   if (row.state !== 'read')
     throw new Conflict('This file is stored already; upload it again to change how it is read');
   const source: Source = { kind: row.kind as UploadKind, fileName: row.fileName, survey, settings };
-  const read = await dryRun(actor, source, () => loadParts(row));
+  const read = await dryRun(actor, source, keptFile(row));
   const { report } = read;
   const [changed] = await UploadRow.update(
     { settings: read.settings, report: report as unknown as Record<string, unknown> },
@@ -286,7 +176,7 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
     survey,
     settings: row.settings as UploadSettings,
   };
-  const { plan, report } = await dryRun(actor, source, () => loadParts(row));
+  const { plan, report } = await dryRun(actor, source, keptFile(row));
   try {
     await inTransaction(async (transaction) => {
       const [claimed] = await UploadRow.update(

@@ -8,7 +8,8 @@ import { candidateListSchema, giveVerdictSchema } from '@/lib/schemas/candidates
 import { getCandidate as readCandidate } from '@/lib/services/candidates/detail';
 import { giveVerdict as decide } from '@/lib/services/candidates/verdicts';
 import { closeReaders } from '@/lib/services/reading';
-import { receiveUpload, storeUpload } from '@/lib/services/uploads';
+import { receiveUpload } from '@/lib/services/receive-upload';
+import { storeUpload } from '@/lib/services/uploads';
 import type { SurveyRow, TargetRow } from '@/models';
 import { withDatabase } from '../support/database';
 import {

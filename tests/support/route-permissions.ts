@@ -11,6 +11,7 @@ export interface RoutePermission {
   ids?: (ids: LabIds) => LabIds;
   body?: (ids: LabIds) => unknown;
   query?: (ids: LabIds) => Record<string, string>;
+  headers?: Record<string, string>;
   /** What is sent as it is, where the route takes a file. */
   file?: { type: string; text: string };
 }
@@ -37,6 +38,7 @@ const accept = as('accept-survey');
 
 const why = { body: () => ({ why: 'They said so' }) };
 const upload = { file: { type: 'application/octet-stream', text: 'name,distance_pc\nA,12\n' } };
+const part = { file: { type: 'application/offset+octet-stream', text: 'name' } };
 const csv = (file: string) => ({ ids: (ids: LabIds) => ({ ...ids, file }) });
 const definition = {
   form: 'power-law',
@@ -102,6 +104,15 @@ export const routePermissions: Record<string, RoutePermission> = {
     ...upload,
     query: ({ survey }) => ({ kind: 'targets', survey, name: 'a.csv' }),
   }),
+  'post /unfinished-files': importing({
+    ...part,
+    query: ({ survey }) => ({ kind: 'targets', survey }),
+    headers: { 'upload-length': '23' },
+  }),
+  // Whoever began a file, and nobody else.
+  'get /unfinished-files/{unfinished}': read(),
+  'patch /unfinished-files/{unfinished}': read({ ...part, headers: { 'upload-offset': '0' } }),
+  'delete /unfinished-files/{unfinished}': read(),
   'get /uploads/{upload}': read(),
   'patch /uploads/{upload}': importing({ body: () => ({}) }),
   'post /uploads/{upload}/store': importing(),

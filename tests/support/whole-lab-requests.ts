@@ -48,7 +48,7 @@ export async function askLab(
   const handler = (await modules[path]())[route.method.toUpperCase()];
   const request = new Request(new URL(`/${search}`, webAddress()), {
     method: route.method.toUpperCase(),
-    headers: { ...headers, ...(type && { 'content-type': type }) },
+    headers: { ...headers, ...permission.headers, ...(type && { 'content-type': type }) },
     body: file?.text ?? json,
   });
   const params = Object.fromEntries(idNames.map((name) => [name, inAddress[name]]));

@@ -1,5 +1,7 @@
 import { randomBytes } from 'node:crypto';
+import type { Actor } from '@/lib/access/actor';
 import { type Role, roleSchema } from '@/lib/schemas/common';
+import { beginFile } from '@/lib/services/unfinished-files';
 import { CoolingTableRow, database, type RunRow, type SurveyRow } from '@/models';
 import { buildMap, buildRun, buildUpload, insert, secret } from './lab-rows';
 import {
@@ -48,6 +50,11 @@ async function buildSky(team: TestCollaboration, leadId: string, name: string) {
     }),
     companion: await buildCompanion(target, { status: 'candidate', probability: 0.5 }),
   };
+}
+
+async function beginUnfinished(collaborationId: string, personId: string): Promise<string> {
+  const actor = { collaborationId, personId } as Actor;
+  return (await beginFile(actor, 23)).id;
 }
 
 interface Made {
@@ -204,7 +211,7 @@ async function buildGivenThings({ team, survey }: Made, other: TestCollaboration
  * everything that has an address of its own; the owner made what has a maker.
  *
  * @param offset the number of its analysis, population and so on, so that two can be told apart
- * @param removes whose token, note and exercise are there
+ * @param removes whose token, note, exercise and unfinished file are there
  */
 export async function buildWholeLab(
   offset: number,
@@ -293,6 +300,7 @@ export async function buildWholeLab(
         ...{ ...sample, name: 'All', definition: '{}', digest: secret() },
       }),
       file: 'table.csv',
+      unfinished: await beginUnfinished(collaborationId, people[removes].id),
     },
   };
 }

@@ -2,7 +2,8 @@ import type { Actor } from '@/lib/access/actor';
 import type { UploadKindName, UploadView } from '@/lib/schemas/uploads';
 import { listCandidates } from '@/lib/services/candidates/list';
 import { addObservation } from '@/lib/services/candidates/observations';
-import { receiveUpload, storeUpload } from '@/lib/services/uploads';
+import { receiveUpload } from '@/lib/services/receive-upload';
+import { storeUpload } from '@/lib/services/uploads';
 import type { DemoCompanion } from './companions';
 
 /** Brings one file in by the way that everybody's files come: read, checked, stored. */

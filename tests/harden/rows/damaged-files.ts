@@ -13,7 +13,7 @@ async function measure({ root, say }: Bench): Promise<Measured> {
   try {
     for (const format of formats) {
       const tally = await readMutations(format, perFormat(), LONGEST_MS, (bytes, context) =>
-        readOnThread(async () => bytes.slice(), context),
+        readOnThread({ byteLength: bytes.length, load: async () => bytes.slice() }, context),
       );
       tallies[format.name] = tally;
       const { accepted, refused, slowestMs, findings } = tally;

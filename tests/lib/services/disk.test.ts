@@ -3,7 +3,7 @@ import os from 'node:os';
 import path from 'node:path';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { problemOf } from '@/app/api/v1/problem';
-import { noRoomFor, sweepIncoming } from '@/lib/services/disk';
+import { noRoomFor, sweepFolder } from '@/lib/services/disk';
 
 const HOUR_S = 3600;
 let folder: string;
@@ -83,7 +83,7 @@ describe('files of uploads that were cut off', () => {
       writeFileSync(path.join(folder, name), 'bytes');
       utimesSync(path.join(folder, name), now - ageS, now - ageS);
     }
-    await sweepIncoming(folder);
+    await sweepFolder(folder, HOUR_S * 1000);
     expect(readdirSync(folder)).toEqual(['coming']);
   });
 });

@@ -2,7 +2,8 @@ import { z } from 'zod';
 import { collaborationRoute } from '@/app/api/v1/handler';
 import { pageSchema } from '@/lib/schemas/common';
 import { uploadQuerySchema } from '@/lib/schemas/uploads';
-import { listUploads, receiveUpload } from '@/lib/services/uploads';
+import { receiveUpload } from '@/lib/services/receive-upload';
+import { listUploads } from '@/lib/services/uploads';
 
 const listQuerySchema = pageSchema.extend({ survey: z.string().optional() });
 
