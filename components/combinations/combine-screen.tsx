@@ -125,7 +125,7 @@ export function CombineScreen({
                 })
               }
               options={[
-                { value: '', label: 'the one that all maps share, else that of the first survey' },
+                { value: '', label: 'the nodes of all its maps together' },
                 ...draft.surveyIds.map((id) => ({
                   value: id,
                   label: `that of ${surveys.find((survey) => survey.id === id)?.name ?? 'a deleted survey'}`,

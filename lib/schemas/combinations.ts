@@ -24,7 +24,7 @@ export const combinationDefinitionSchema = z
       .array(z.strictObject({ starId: idSchema, rule: starRuleSchema }))
       .max(10_000)
       .default([]),
-    /** `common`: the grid that all maps share, or that of the first survey. */
+    /** `common`: the nodes of all maps together, or, above 256 an axis, the finest survey's. */
     grid: z
       .discriminatedUnion('choice', [
         z.strictObject({ choice: z.literal('common') }),

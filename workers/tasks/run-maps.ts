@@ -1,4 +1,5 @@
 import { InputError } from '@/lib/errors';
+import { unionAxis } from '@/lib/numerics/grid';
 import { listFirst } from '@/lib/queue/preconditions';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import {
@@ -24,27 +25,45 @@ export type Rule = 'same-position' | 'deepest' | 'independent';
 /** Digest of a star's map in this run: its own, or the one combined from its entries. */
 export type MapDigests = Map<string, string>;
 
-const sameAxes = (a: number[] | Float64Array, b: number[] | Float64Array) =>
-  a.length === b.length && a.every((value, i) => value === b[i]);
+/** A run on more nodes an axis costs time and memory; its limits would not move. */
+const MOST_NODES = 256;
 
-/** The grid of a run: that of its maps where they share one, else that of its first survey. */
+/** Grids by their nodes: the maps of a survey share one. */
+function gridsOf(maps: MapGrid[]): MapGrid[] {
+  const known = new Map<string, MapGrid>();
+  for (const { massMjup, semiMajorAxisAu } of maps) {
+    known.set(`${massMjup.join()} ${semiMajorAxisAu.join()}`, { massMjup, semiMajorAxisAu });
+  }
+  return [...known.values()];
+}
+
+/**
+ * The grid of a run: the nodes of all its maps together, on which each is itself, bilinear between
+ * its own nodes. Where those are too many, the grid of the survey with the most.
+ */
 export function commonGrid(sample: Sample): MapGrid {
   const choice = sample.combination?.definition.grid;
   const chosen = choice?.choice === 'survey' && choice.surveyId;
   const survey = sample.surveys.find(({ row }) => row.id === chosen);
   if (survey) return survey.recipe.grid;
-  const maps = sample.stars.flatMap(({ entries }) => entries.map(({ map }) => map));
-  const [first] = maps;
-  const isShared = maps.every(
-    (map) =>
-      sameAxes(map.massMjup, first.massMjup) &&
-      sameAxes(map.semiMajorAxisAu, first.semiMajorAxisAu),
+  const grids = gridsOf(
+    sample.stars.flatMap(({ entries }) =>
+      entries.map(({ map }) => ({
+        massMjup: Float64Array.from(map.massMjup),
+        semiMajorAxisAu: Float64Array.from(map.semiMajorAxisAu),
+      })),
+    ),
   );
-  if (!isShared) return sample.surveys[0].recipe.grid;
-  return {
-    massMjup: Float64Array.from(first.massMjup),
-    semiMajorAxisAu: Float64Array.from(first.semiMajorAxisAu),
+  const united = {
+    massMjup: unionAxis(grids.map(({ massMjup }) => massMjup)),
+    semiMajorAxisAu: unionAxis(grids.map(({ semiMajorAxisAu }) => semiMajorAxisAu)),
   };
+  if (Math.max(united.massMjup.length, united.semiMajorAxisAu.length) <= MOST_NODES) return united;
+  const nodes = ({ massMjup, semiMajorAxisAu }: MapGrid) =>
+    massMjup.length * semiMajorAxisAu.length;
+  return sample.surveys
+    .map(({ recipe }) => recipe.grid)
+    .reduce((most, one) => (nodes(one) > nodes(most) ? one : most));
 }
 
 const hasCurve = (entry: Entry) => entry.curves.length > 0 && entry.map.origin === 'computed';
