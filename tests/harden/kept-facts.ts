@@ -28,6 +28,13 @@ const LINES = `
 
 type Finished = Pick<RunRow, 'recipe' | 'inputs' | 'result'> & { name: string };
 
+/** Without what each run draws anew, its seed and the ids after which its stars are listed. */
+function alike<Run extends Pick<Finished, 'inputs'>>({ inputs, ...run }: Run) {
+  const byName = (a: { name: string }, b: { name: string }) => (a.name < b.name ? -1 : 1);
+  const same = inputs && { ...inputs, seed: '', stars: [...inputs.stars].sort(byName) };
+  return { ...run, inputs: same };
+}
+
 /** Everything that a laboratory holds, one line a thing, in an order that does not depend on time. */
 export async function keptFacts(databaseUrl: string): Promise<string[]> {
   const rows = await query<{ line: string }>(databaseUrl, LINES);
@@ -36,7 +43,7 @@ export async function keptFacts(databaseUrl: string): Promise<string[]> {
     `select a.name, r.recipe, r.inputs, r.result from run r join analysis a on a.id = r.analysis_id`,
   );
   const results = runs.map(({ name, ...run }) => {
-    const { portableInputs, portableResult } = portableDigests(run);
+    const { portableInputs, portableResult } = portableDigests(alike(run));
     return `run ${name} ${portableInputs} ${portableResult}`;
   });
   return [...rows.map(({ line }) => line), ...results].sort();
