@@ -26,12 +26,12 @@ export class LongJobs {
 
   constructor(private readonly api: Api) {}
 
-  /** Sees to it that so many compute, and that others follow them. */
+  /** Sees to it that so many at least compute, and that others follow them. */
   async keep(count: number): Promise<void> {
     this.ids = (await this.read()).filter(isOpen).map(({ id }) => id);
     while (this.ids.length < count + SPARE) this.ids.push(await this.ask());
     for (let s = 0; s < START_S; s++) {
-      if ((await this.computing()) === count) return;
+      if ((await this.computing()) >= count) return;
       await pause(1000);
     }
     throw new Error(`${count} long jobs did not start within ${START_S} s`);
