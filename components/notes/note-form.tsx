@@ -45,7 +45,7 @@ export function NoteForm(props: NoteFormProps) {
   };
   return (
     <form
-      className="max-w-[72ch]"
+      className="max-w-[72ch] print:hidden"
       onSubmit={(event) => {
         event.preventDefault();
         void send();

@@ -7,7 +7,7 @@ import type { Verdict } from '@/components/hooks/use-stars';
 import { Button } from '@/components/ui/button';
 import { SeriesKey } from '@/components/ui/series-key';
 import { TextAction } from '@/components/ui/text-action';
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlace, formatPlain } from '@/lib/quantities/display';
 import type { StarMatchView } from '@/lib/schemas/stars';
 import { ReasonDialog } from './reason-dialog';
 import { evidenceWords } from './star-words';
@@ -54,7 +54,7 @@ function Side({ collaboration, star }: { collaboration: string; star: StarMatchV
           {entry.distancePc !== null && `${formatPlain(entry.distancePc)}\u00a0pc, `}
           {entry.raDeg !== null && entry.decDeg !== null ? (
             <span className="whitespace-nowrap">
-              {entry.raDeg.toFixed(5)}° {entry.decDeg.toFixed(5)}° ({formatPlain(entry.epochYr, 6)})
+              {formatPlace(entry.raDeg, entry.decDeg)} ({formatPlain(entry.epochYr, 6)})
             </span>
           ) : (
             'no position'

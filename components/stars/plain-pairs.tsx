@@ -43,18 +43,20 @@ export function PlainPairs({ pairs, onConfirm }: PlainPairsProps) {
             of their stars waits in another pair. Later runs count each once; each can be undone by
             itself.
           </p>
-          <fieldset className="grid max-h-72 gap-1 overflow-y-auto">
-            <legend className="sr-only">Pairs</legend>
-            {pairs.map((pair) => (
-              <CheckboxField
-                key={pair.id}
-                label={pair.stars.map(({ name }) => name).join(' and ')}
-                hint={evidenceWords(pair.evidence)}
-                checked={!left.has(pair.id)}
-                onChange={() => toggle(pair.id)}
-              />
-            ))}
-          </fieldset>
+          <div className="max-h-72 overflow-y-auto">
+            <fieldset className="grid gap-1">
+              <legend className="sr-only">Pairs</legend>
+              {pairs.map((pair) => (
+                <CheckboxField
+                  key={pair.id}
+                  label={pair.stars.map(({ name }) => name).join(' and ')}
+                  hint={evidenceWords(pair.evidence)}
+                  checked={!left.has(pair.id)}
+                  onChange={() => toggle(pair.id)}
+                />
+              ))}
+            </fieldset>
+          </div>
         </ReasonDialog>
       )}
     </>

@@ -7,7 +7,7 @@ import { splitStar } from '@/components/hooks/use-stars';
 import { SeriesKey } from '@/components/ui/series-key';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlace, formatPlain } from '@/lib/quantities/display';
 import type { StarEntry, StarPage } from '@/lib/schemas/stars';
 import { ReasonDialog } from './reason-dialog';
 
@@ -57,7 +57,7 @@ export function StarEntries({ collaboration, star, onChanged }: StarEntriesProps
               <Cell className="whitespace-nowrap">
                 {entry.raDeg === null || entry.decDeg === null
                   ? '–'
-                  : `${entry.raDeg.toFixed(5)} ${entry.decDeg.toFixed(5)}`}
+                  : formatPlace(entry.raDeg, entry.decDeg)}
               </Cell>
               <Cell isNumeric>
                 {entry.hostMassMsun === null ? '–' : formatPlain(entry.hostMassMsun)}

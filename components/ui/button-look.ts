@@ -19,5 +19,5 @@ export function buttonLook(
   const look = isRefused
     ? 'border-dashed border-rule2 bg-transparent text-ink3 cursor-not-allowed'
     : variants[variant];
-  return `inline-flex items-center justify-center gap-[7px] rounded border font-semibold whitespace-nowrap hover:no-underline max-md:h-11 pointer-coarse:h-11 ${height} ${padding} ${look} ${isWide ? 'w-full' : ''}`;
+  return `inline-flex items-center justify-center gap-[7px] rounded border font-semibold whitespace-nowrap hover:no-underline max-md:h-11 print:hidden pointer-coarse:h-11 ${height} ${padding} ${look} ${isWide ? 'w-full' : ''}`;
 }

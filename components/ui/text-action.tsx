@@ -14,7 +14,7 @@ export function TextAction({ icon, children, className = '', ...rest }: TextActi
     <button
       type="button"
       {...rest}
-      className={`inline-flex min-h-6 items-center gap-1.5 whitespace-nowrap text-act hover:underline hover:underline-offset-3 max-md:min-h-11 ${className}`}
+      className={`inline-flex min-h-6 items-center gap-1.5 whitespace-nowrap text-act print:hidden hover:underline hover:underline-offset-3 max-md:min-h-11 ${className}`}
     >
       {icon !== undefined && <Icon name={icon} size={15} />}
       {children}

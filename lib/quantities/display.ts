@@ -86,6 +86,11 @@ export function formatRate(value: number, quantity: RateQuantity, digits = 2): s
   return quantity === 'host_fraction' ? formatPercent(value, digits) : formatPer100(value, digits);
 }
 
+/** A place on the sky [deg], to 0.04 arcseconds: "−52.64735°". */
+export function formatPlace(raDeg: number, decDeg: number): string {
+  return [raDeg, decDeg].map((angle) => `${angle.toFixed(5).replace('-', '\u2212')}°`).join(' ');
+}
+
 /**
  * The shortest form of a number that a person would type: up to `digits` digits, no trailing zeros.
  *
