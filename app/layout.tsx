@@ -7,7 +7,9 @@ import './globals.css';
 import type { Metadata, Viewport } from 'next';
 import { cookies } from 'next/headers';
 import type { ReactNode } from 'react';
+import { preload } from 'react-dom';
 import { readTheme, THEME_COOKIE } from '@/components/ui/theme';
+import { firstFonts } from './fonts';
 
 export const metadata: Metadata = {
   title: { default: 'Rarebound', template: '%s, Rarebound' },
@@ -33,6 +35,9 @@ export const dynamic = 'force-dynamic';
  */
 export default async function RootLayout({ children }: { children: ReactNode }) {
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
+  for (const font of firstFonts) {
+    preload(font, { as: 'font', type: 'font/woff2', crossOrigin: 'anonymous' });
+  }
   return (
     <html lang="en-GB" data-theme={theme === 'system' ? undefined : theme}>
       <body>{children}</body>
