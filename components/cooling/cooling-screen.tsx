@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { TrackChart } from '@/components/charts/track-chart';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
 import { nameStart, useCoolingRelation } from '@/components/hooks/use-cooling';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -75,6 +76,7 @@ export function CoolingScreen({ collaboration, tables, canName }: CoolingScreenP
                     collaboration={collaboration}
                     relation={relation}
                     onNamed={(next) => void shown.mutate(next, { revalidate: false })}
+                    onNewer={() => void shown.mutate()}
                   />
                 )}
               </div>
@@ -128,17 +130,20 @@ interface StartFieldProps {
   collaboration: string;
   relation: CoolingRelationView;
   onNamed(relation: CoolingRelationView): void;
+  /** Somebody else named it. */
+  onNewer(): void;
 }
 
-function StartField({ collaboration, relation, onNamed }: StartFieldProps) {
+function StartField({ collaboration, relation, onNamed, onNewer }: StartFieldProps) {
   const [refusal, setRefusal] = useState<string>();
   const name = async (value: string) => {
     setRefusal(undefined);
     try {
       const start = starts.find((one) => one === value) ?? relation.startCondition;
-      onNamed(await nameStart(collaboration, relation.id, start));
+      onNamed(await nameStart(collaboration, relation.id, relation.startCondition, start));
     } catch (reason) {
       setRefusal(sentenceOf(reason));
+      if (reason instanceof ChangedMeanwhile) onNewer();
     }
   };
   return (

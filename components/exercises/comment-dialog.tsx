@@ -2,9 +2,11 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useEditing } from '@/components/hooks/use-editing';
 import { commentOn } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import type { SubmissionView } from '@/lib/schemas/exercises';
 
@@ -21,18 +23,21 @@ interface CommentDialogProps {
 export function CommentDialog(props: CommentDialogProps) {
   const { collaboration, exerciseKey, who, submission, onClose, onSaved } = props;
   const [comment, setComment] = useState(submission.comment ?? '');
+  const editing = useEditing(submission.comment ?? '');
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<string>();
   const save = async () => {
     setBusy(true);
     setProblem(undefined);
     try {
-      await commentOn(collaboration, exerciseKey, submission.id, comment);
-      onSaved();
+      await editing.attempt(comment, async (opened) => {
+        await commentOn(collaboration, exerciseKey, submission.id, opened, comment);
+        onSaved();
+      });
     } catch (reason) {
       setProblem(sentenceOf(reason));
-      setBusy(false);
     }
+    setBusy(false);
   };
   return (
     <Dialog
@@ -65,6 +70,14 @@ export function CommentDialog(props: CommentDialogProps) {
         error={problem}
         onChange={(event) => setComment(event.target.value)}
       />
+      <div className="mt-3 empty:hidden">
+        <ChangedNotice
+          editing={editing}
+          words={(text) => ({ Answer: text })}
+          onTake={setComment}
+          onKeep={() => void save()}
+        />
+      </div>
     </Dialog>
   );
 }

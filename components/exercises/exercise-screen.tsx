@@ -3,12 +3,15 @@
 import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
+import { useEditing } from '@/components/hooks/use-editing';
 import {
   exerciseTableAddress,
   updateExercise,
   useExercise,
 } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -16,7 +19,7 @@ import { Conditions } from '@/components/ui/plate';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextField } from '@/components/ui/text-field';
-import type { ExerciseDetail, UpdateExercise } from '@/lib/schemas/exercises';
+import type { ExerciseDetail } from '@/lib/schemas/exercises';
 import { dueWords, openWords } from './exercise-words';
 import { OwnWork } from './own-work';
 import { StatedLimit } from './stated-limit';
@@ -131,14 +134,27 @@ function SettingsSection({
   const [dueOn, setDueOn] = useState(exercise.dueOn ?? '');
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<string>();
-  const change = async (body: UpdateExercise) => {
+  const editing = useEditing(exercise.dueOn);
+  const setDay = (day: string | null) =>
+    perform(() =>
+      editing.attempt(day, async (opened) => {
+        await updateExercise(collaboration, exercise.key, { dueOn: opened }, { dueOn: day });
+        editing.begin(day);
+      }),
+    );
+  const share = ({ isShared }: ExerciseDetail) =>
+    perform(() =>
+      updateExercise(collaboration, exercise.key, { isShared }, { isShared: !isShared }),
+    );
+  const perform = async (work: () => Promise<unknown>) => {
     setBusy(true);
     setProblem(undefined);
     try {
-      await updateExercise(collaboration, exercise.key, body);
+      await work();
       onChanged();
     } catch (reason) {
       setProblem(sentenceOf(reason));
+      if (reason instanceof ChangedMeanwhile) onChanged();
     } finally {
       setBusy(false);
     }
@@ -156,15 +172,23 @@ function SettingsSection({
           />
         </div>
         <Button
-          onClick={() => void change({ dueOn: dueOn === '' ? null : dueOn })}
+          onClick={() => void setDay(dueOn === '' ? null : dueOn)}
           isBusy={isBusy}
           disabledReason={dueOn === (exercise.dueOn ?? '') ? 'It is this day already.' : undefined}
         >
           Set this day
         </Button>
-        <Button onClick={() => void change({ isShared: !exercise.isShared })} isBusy={isBusy}>
+        <Button onClick={() => void share(exercise)} isBusy={isBusy}>
           {exercise.isShared ? 'Take it back from everybody' : 'Share it'}
         </Button>
+      </div>
+      <div className="mt-3 empty:hidden">
+        <ChangedNotice
+          editing={editing}
+          words={(day) => ({ 'Last day': day ?? 'none' })}
+          onTake={(day) => setDueOn(day ?? '')}
+          onKeep={() => void setDay(dueOn === '' ? null : dueOn)}
+        />
       </div>
       {problem !== undefined && (
         <div className="mt-3">

@@ -15,7 +15,7 @@ import { jobSchema } from '@/lib/schemas/jobs';
 import { leavingSchema } from '@/lib/schemas/leaving';
 import { failedMessagesSchema, mailPreferencesSchema, stoppedMailSchema } from '@/lib/schemas/mail';
 import { mapStoreSchema, surveyMapsSchema } from '@/lib/schemas/map-states';
-import { noteListSchema } from '@/lib/schemas/notes';
+import { noteListSchema, oneNoteSchema } from '@/lib/schemas/notes';
 import { overviewSchema } from '@/lib/schemas/overview';
 import {
   invitationOfferSchema,
@@ -95,6 +95,7 @@ export {
   newKeySchema,
   newTokenSchema,
   noteListSchema,
+  oneNoteSchema,
   overlapsSchema,
   overviewSchema,
   populationListSchema,

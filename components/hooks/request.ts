@@ -1,14 +1,17 @@
 import type { ZodType } from 'zod';
 import { ApiProblem, readProblem } from './api-problem';
 
-export interface RequestOptions {
-  method?: 'GET' | 'POST' | 'PATCH' | 'DELETE';
+interface Sent {
   /** Sent as JSON. */
   body?: unknown;
   /** Sent as it is, with its own type. */
   content?: Blob;
   signal?: AbortSignal;
 }
+
+/** What changes an existing thing names the state that it changes: `change` finds it. */
+export type RequestOptions = Sent &
+  ({ method?: 'GET' | 'POST' | 'DELETE' } | { method: 'PATCH'; ifMatch: string });
 
 /** A schema, or what loads it: asked for at the same time as the answer that it reads. */
 export type AnswerSchema<T> = ZodType<T> | (() => Promise<ZodType<T>>);
@@ -23,12 +26,21 @@ export async function request<T>(
   schema: AnswerSchema<T>,
   options: RequestOptions = {},
 ): Promise<T> {
+  return (await requestTagged(path, schema, options)).value;
+}
+
+/** The same with the tag of the state that was answered; null where the answer has none. */
+export async function requestTagged<T>(
+  path: string,
+  schema: AnswerSchema<T>,
+  options: RequestOptions = {},
+): Promise<{ value: T; etag: string | null }> {
   const [response, reader] = await Promise.all([
     send(path, options),
     typeof schema === 'function' ? schema() : schema,
   ]);
   const parsed = reader.safeParse(await response.json());
-  if (parsed.success) return parsed.data;
+  if (parsed.success) return { value: parsed.data, etag: response.headers.get('etag') };
   const issue = parsed.error.issues[0];
   throw new ApiProblem({
     type: 'about:blank',
@@ -61,12 +73,14 @@ export async function requestFile(path: string, options: RequestOptions): Promis
 
 async function send(
   path: string,
-  { method = 'GET', body, content, signal }: RequestOptions,
+  options: RequestOptions,
   accept = 'application/json',
 ): Promise<Response> {
+  const { method = 'GET', body, content, signal } = options;
   const headers: Record<string, string> = { accept };
   if (body !== undefined) headers['content-type'] = 'application/json';
   if (content !== undefined) headers['content-type'] = content.type;
+  if ('ifMatch' in options) headers['if-match'] = options.ifMatch;
   let response: Response;
   try {
     response = await fetch(path, {

@@ -4,6 +4,7 @@ import useSWR from 'swr';
 import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
 import { answer } from './answer';
 import { apiPath } from './api-path';
+import { change, requireSame } from './change';
 import { request, requestNothing } from './request';
 
 const POLL_MS = 1000;
@@ -43,14 +44,25 @@ export function createAnalysis(
   });
 }
 
-export function updateAnalysis(
+/** @throws ChangedMeanwhile where the recipe is not the one that was opened */
+export function requireRecipe(collaboration: string, key: string, opened: AnalysisRecipe) {
+  return requireSame(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
+    part: (analysis) => analysis.recipe,
+    opened,
+  });
+}
+
+export function changeRecipe(
   collaboration: string,
   key: string,
-  body: { name?: string; recipe?: AnalysisRecipe },
+  opened: AnalysisRecipe,
+  recipe: AnalysisRecipe,
 ): Promise<AnalysisView> {
-  return request(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
-    method: 'PATCH',
-    body,
+  return change(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
+    part: (analysis) => analysis.recipe,
+    opened,
+    body: { recipe },
+    answer: answer('analysisSchema'),
   });
 }
 

@@ -4,6 +4,7 @@ import useSWR from 'swr';
 import type { CoolingRelationView, StartCondition } from '@/lib/schemas/cooling';
 import { answer } from './answer';
 import { apiPath } from './api-path';
+import { change } from './change';
 import { request } from './request';
 
 /** A cooling relation with its numbers. */
@@ -18,10 +19,13 @@ export function useCoolingRelation(collaboration: string, id: string | undefined
 export function nameStart(
   collaboration: string,
   id: string,
+  opened: StartCondition,
   startCondition: StartCondition,
 ): Promise<CoolingRelationView> {
-  return request(apiPath(collaboration, 'cooling-tables', id), answer('coolingRelationSchema'), {
-    method: 'PATCH',
+  return change(apiPath(collaboration, 'cooling-tables', id), answer('coolingRelationSchema'), {
+    part: (relation) => relation.startCondition,
+    opened,
     body: { startCondition },
+    answer: answer('coolingRelationSchema'),
   });
 }

@@ -9,6 +9,7 @@ import type {
 } from '@/lib/schemas/exercises';
 import { answer } from './answer';
 import { apiPath } from './api-path';
+import { change, pick } from './change';
 import { request } from './request';
 
 export function useExercises(collaboration: string, fallback?: ExerciseView[]) {
@@ -34,10 +35,18 @@ export function createExercise(collaboration: string, body: CreateExercise): Pro
   });
 }
 
-export function updateExercise(collaboration: string, key: string, body: UpdateExercise) {
-  return request(apiPath(collaboration, 'exercises', key), answer('exerciseSchema'), {
-    method: 'PATCH',
+/** Changes those parts of an exercise that were opened. */
+export function updateExercise<Name extends keyof ExerciseView & keyof UpdateExercise>(
+  collaboration: string,
+  key: string,
+  opened: Pick<ExerciseView, Name>,
+  body: Pick<UpdateExercise, Name>,
+): Promise<ExerciseView> {
+  return change(apiPath(collaboration, 'exercises', key), answer('exerciseDetailSchema'), {
+    part: (exercise) => pick<ExerciseView, Name>(exercise, opened),
+    opened,
     body,
+    answer: answer('exerciseSchema'),
   });
 }
 
@@ -64,10 +73,19 @@ export function commentOn(
   collaboration: string,
   key: string,
   submissionId: string,
+  opened: string,
   comment: string,
 ) {
-  const path = apiPath(collaboration, 'exercises', key, 'submissions', submissionId);
-  return request(path, answer('submissionSchema'), { method: 'PATCH', body: { comment } });
+  return change(
+    apiPath(collaboration, 'exercises', key, 'submissions', submissionId),
+    answer('submissionSchema'),
+    {
+      part: (submission) => submission.comment ?? '',
+      opened,
+      body: { comment },
+      answer: answer('submissionSchema'),
+    },
+  );
 }
 
 /** Address of everybody's submissions as a table; the browser itself follows it. */

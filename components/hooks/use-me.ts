@@ -3,12 +3,18 @@
 import useSWR from 'swr';
 import type { SessionView } from '@/lib/schemas/account';
 import { answer } from './answer';
+import { change } from './change';
 import { request, requestNothing } from './request';
 
 const SESSIONS = '/api/v1/me/sessions';
 
-export function changeName(name: string) {
-  return request('/api/v1/me', answer('meSchema'), { method: 'PATCH', body: { name } });
+export function changeName(opened: string, name: string) {
+  return change('/api/v1/me', answer('meSchema'), {
+    part: ({ person }) => person.name,
+    opened,
+    body: { name },
+    answer: answer('meSchema'),
+  });
 }
 
 /** Other sessions end; this one stays. */

@@ -4,6 +4,7 @@ import useSWR from 'swr';
 import type { NoteItem, NoteList } from '@/lib/schemas/notes';
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
+import { change } from './change';
 import { request, requestNothing } from './request';
 
 export function useNotes(collaboration: string, on: NoteItem, fallback: NoteList) {
@@ -38,14 +39,21 @@ export function writeNote(collaboration: string, on: NoteItem, text: NoteText, r
   });
 }
 
-export function changeNote(
-  collaboration: string,
-  id: string,
-  change: NoteText | { isResolved: boolean },
-) {
-  return request(apiPath(collaboration, 'notes', id), answer('noteListSchema'), {
-    method: 'PATCH',
-    body: change,
+export function changeNote(collaboration: string, id: string, opened: string, words: NoteText) {
+  return change(apiPath(collaboration, 'notes', id), answer('oneNoteSchema'), {
+    part: ({ body }) => body ?? '',
+    opened,
+    body: words,
+    answer: answer('noteListSchema'),
+  });
+}
+
+export function settleNote(collaboration: string, id: string, isResolved: boolean) {
+  return change(apiPath(collaboration, 'notes', id), answer('oneNoteSchema'), {
+    part: ({ resolved }) => (resolved ?? null) !== null,
+    opened: !isResolved,
+    body: { isResolved },
+    answer: answer('noteListSchema'),
   });
 }
 

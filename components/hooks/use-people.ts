@@ -5,6 +5,7 @@ import type { Role } from '@/lib/schemas/common';
 import type { InvitationView, MemberView, TokenView } from '@/lib/schemas/people';
 import { answer } from './answer';
 import { apiPath } from './api-path';
+import { change } from './change';
 import { request, requestNothing } from './request';
 
 export function useMembers(collaboration: string, fallback: MemberView[]) {
@@ -31,10 +32,17 @@ export function useTokens(collaboration: string, fallback: TokenView[]) {
   );
 }
 
-export function changeRoles(collaboration: string, memberId: string, roles: Role[]) {
-  return request(apiPath(collaboration, 'members', memberId), answer('anyAnswerSchema'), {
-    method: 'PATCH',
+export function changeRoles(
+  collaboration: string,
+  memberId: string,
+  opened: Role[],
+  roles: Role[],
+) {
+  return change(apiPath(collaboration, 'members', memberId), answer('memberSchema'), {
+    part: (member) => member.roles,
+    opened,
     body: { roles },
+    answer: answer('anyAnswerSchema'),
   });
 }
 

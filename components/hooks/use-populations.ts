@@ -9,6 +9,7 @@ import type {
 } from '@/lib/schemas/populations';
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
+import { change } from './change';
 import { request } from './request';
 
 /** Every version that the person may see, newest first. */
@@ -59,5 +60,10 @@ export function sharePopulation(
   isShared: boolean,
 ): Promise<PopulationView> {
   const path = withQuery(apiPath(collaboration, 'populations', key), { version });
-  return request(path, answer('populationSchema'), { method: 'PATCH', body: { isShared } });
+  return change(path, answer('populationSchema'), {
+    part: (population) => population.isShared,
+    opened: !isShared,
+    body: { isShared },
+    answer: answer('populationSchema'),
+  });
 }

@@ -6,6 +6,7 @@ import type { FreezeStanding, GuestLinkView, ReleaseView } from '@/lib/schemas/r
 import { answer } from './answer';
 import { apiPath } from './api-path';
 import { readProblem } from './api-problem';
+import { change } from './change';
 import { request, requestNothing } from './request';
 
 const CHECK_MS = 2000;
@@ -59,10 +60,18 @@ export const withdrawRelease = (collaboration: string, id: string, reason: strin
 export const createRelease = (collaboration: string, body: unknown): Promise<ReleaseView> =>
   request(apiPath(collaboration, 'releases'), answer('releaseSchema'), { method: 'POST', body });
 
-export const updateRelease = (collaboration: string, id: string, body: unknown) =>
-  request(apiPath(collaboration, 'releases', id), answer('releaseSchema'), {
-    method: 'PATCH',
+export const updateRelease = <Draft>(
+  collaboration: string,
+  id: string,
+  part: (release: ReleaseView) => Draft,
+  opened: Draft,
+  body: unknown,
+) =>
+  change(apiPath(collaboration, 'releases', id), answer('releaseSchema'), {
+    part,
+    opened,
     body,
+    answer: answer('releaseSchema'),
   });
 
 export const removeRelease = (collaboration: string, id: string) =>

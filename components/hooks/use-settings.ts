@@ -2,15 +2,25 @@
 
 import useSWR from 'swr';
 import type { ChangeMailPreference, FailedMessage } from '@/lib/schemas/mail';
-import type { ChangeSettings } from '@/lib/schemas/settings';
+import type { ChangeSettings, SettingsView } from '@/lib/schemas/settings';
 import { answer } from './answer';
 import { apiPath } from './api-path';
+import { change, pick } from './change';
 import { request, requestNothing } from './request';
 
-export function changeSettings(collaboration: string, change: ChangeSettings) {
-  return request(apiPath(collaboration, 'settings'), answer('settingsSchema'), {
-    method: 'PATCH',
-    body: change,
+export type SettingsPart = Partial<SettingsView>;
+
+/** Changes settings where those parts that were opened are as they were. */
+export function changeSettings(
+  collaboration: string,
+  opened: SettingsPart,
+  body: ChangeSettings,
+): Promise<SettingsView> {
+  return change(apiPath(collaboration, 'settings'), answer('settingsSchema'), {
+    part: (settings): SettingsPart => pick(settings, opened as SettingsView),
+    opened,
+    body,
+    answer: answer('settingsSchema'),
   });
 }
 
@@ -26,10 +36,13 @@ export function retryMessage(collaboration: string, id: string) {
   return requestNothing(apiPath(collaboration, 'mail', id, 'retry'), { method: 'POST' });
 }
 
-export function changeMailPreference(change: ChangeMailPreference) {
-  return request('/api/v1/me/mail', answer('mailPreferencesSchema'), {
-    method: 'PATCH',
-    body: change,
+export function changeMailPreference(wanted: ChangeMailPreference) {
+  return change('/api/v1/me/mail', answer('mailPreferencesSchema'), {
+    part: ({ preferences }) =>
+      preferences.find(({ kind }) => kind === wanted.kind)?.isWanted ?? !wanted.isWanted,
+    opened: !wanted.isWanted,
+    body: wanted,
+    answer: answer('mailPreferencesSchema'),
   });
 }
 

@@ -16,7 +16,10 @@ import type {
 } from '@/lib/schemas/surveys';
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
+import { change, pick } from './change';
 import { request } from './request';
+
+type UpdateSurvey = z.input<typeof updateSurveySchema>;
 
 const POLL_MS = 1500;
 const isComputing = (survey: SurveyView | undefined) =>
@@ -134,14 +137,18 @@ export function createSurvey(
   });
 }
 
-export function updateSurvey(
+/** Changes those parts of a survey that were opened. */
+export function updateSurvey<Name extends keyof SurveyView & keyof UpdateSurvey>(
   collaboration: string,
   slug: string,
-  body: z.input<typeof updateSurveySchema>,
+  opened: Pick<SurveyView, Name>,
+  body: Pick<UpdateSurvey, Name>,
 ): Promise<SurveyView> {
-  return request(apiPath(collaboration, 'surveys', slug), answer('surveySchema'), {
-    method: 'PATCH',
+  return change(apiPath(collaboration, 'surveys', slug), answer('surveySchema'), {
+    part: (survey) => pick(survey, opened),
+    opened,
     body,
+    answer: answer('surveySchema'),
   });
 }
 
@@ -152,13 +159,16 @@ export function startMaps(collaboration: string, slug: string): Promise<JobView>
 }
 
 /** Leaves a target out with a reason, takes it back in, or marks how it was chosen. */
-export function markTarget(
+export function markTarget<Name extends keyof TargetView & keyof MarkTarget>(
   collaboration: string,
   id: string,
-  body: MarkTarget,
+  opened: Pick<TargetView, Name>,
+  body: Pick<MarkTarget, Name>,
 ): Promise<TargetView> {
-  return request(apiPath(collaboration, 'targets', id), answer('targetSchema'), {
-    method: 'PATCH',
+  return change(apiPath(collaboration, 'targets', id), answer('targetSchema'), {
+    part: (target) => pick(target, opened),
+    opened,
     body,
+    answer: answer('targetSchema'),
   });
 }

@@ -10,6 +10,7 @@ import type {
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { ApiProblem, readProblem } from './api-problem';
+import { change } from './change';
 import { request, requestNothing } from './request';
 
 /** Uploads of a survey, newest first. */
@@ -102,11 +103,14 @@ export async function sendUpload(
 export function changeUpload(
   collaboration: string,
   id: string,
+  opened: UploadSettings,
   settings: UploadSettings,
 ): Promise<UploadView> {
-  return request(apiPath(collaboration, 'uploads', id), answer('uploadSchema'), {
-    method: 'PATCH',
+  return change(apiPath(collaboration, 'uploads', id), answer('uploadSchema'), {
+    part: (upload) => upload.settings,
+    opened,
     body: settings,
+    answer: answer('uploadSchema'),
   });
 }
 

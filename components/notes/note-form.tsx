@@ -14,7 +14,8 @@ interface NoteFormProps {
   verb: string;
   initial?: { body: string; mentions: readonly Nameable[] };
   isFocused?: boolean;
-  onSend(text: NoteText): Promise<void>;
+  /** Answers whether it was stored; what was not stays in the field. */
+  onSend(text: NoteText): Promise<boolean>;
   onCancel?(): void;
 }
 
@@ -35,9 +36,11 @@ export function NoteForm(props: NoteFormProps) {
     setBusy(true);
     setRefusal(null);
     try {
-      await onSend({ body, mentions: mentionedIn(body, people, picked) });
-      setBody('');
-      setPicked(new Set());
+      const isStored = await onSend({ body, mentions: mentionedIn(body, people, picked) });
+      if (isStored) {
+        setBody('');
+        setPicked(new Set());
+      }
     } catch (reason) {
       setRefusal(sentenceOf(reason));
     }

@@ -1,7 +1,9 @@
 'use client';
 
 import { type ReactNode, useState } from 'react';
+import { useEditing } from '@/components/hooks/use-editing';
 import type { NoteText as Words } from '@/components/hooks/use-notes';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { Icon } from '@/components/ui/icon';
 import { TextAction } from '@/components/ui/text-action';
 import { useMoment } from '@/components/ui/time-zone';
@@ -12,7 +14,8 @@ import { NoteText } from './note-text';
 /** What can be done with notes; each answers when the list is new. */
 export interface NoteActions {
   reply(to: string, words: Words): Promise<void>;
-  change(id: string, words: Words): Promise<void>;
+  /** @param opened the words that were there when the change began */
+  change(id: string, opened: string, words: Words): Promise<void>;
   remove(id: string): Promise<void>;
   settle(id: string, isResolved: boolean): Promise<void>;
 }
@@ -53,17 +56,11 @@ function Note({ collaboration, note, actions, tools }: NoteProps) {
       {body === null && <p className="text-ink3 italic">Removed by the person who wrote it.</p>}
       {body !== null && mode !== 'change' && <NoteText body={body} mentions={note.mentions} />}
       {body !== null && mode === 'change' && (
-        <NoteForm
+        <NoteChange
           collaboration={collaboration}
-          label="New words"
-          verb="Save"
-          initial={{ body, mentions: note.mentions }}
-          isFocused
-          onSend={async (words) => {
-            await actions.change(note.id, words);
-            setMode('read');
-          }}
-          onCancel={() => setMode('read')}
+          note={{ ...note, body }}
+          actions={actions}
+          onClose={() => setMode('read')}
         />
       )}
       {mode === 'remove' && (
@@ -87,6 +84,48 @@ function Note({ collaboration, note, actions, tools }: NoteProps) {
         </div>
       )}
     </article>
+  );
+}
+
+interface ChangeProps extends Omit<NoteProps, 'tools' | 'note'> {
+  note: NoteReply & { body: string };
+  onClose(): void;
+}
+
+/** New words for a note; another window of the same person may have been first. */
+function NoteChange({ collaboration, note, actions, onClose }: ChangeProps) {
+  const editing = useEditing(note.body);
+  const [held, setHeld] = useState<Words>({ body: note.body, mentions: [] });
+  const [shown, setShown] = useState(note.body);
+  const save = async (words: Words) => {
+    setHeld(words);
+    const isStored = await editing.attempt(words.body, (opened) =>
+      actions.change(note.id, opened, words),
+    );
+    if (isStored) onClose();
+    return isStored;
+  };
+  return (
+    <>
+      <NoteForm
+        key={shown}
+        collaboration={collaboration}
+        label="New words"
+        verb="Save"
+        initial={{ body: shown, mentions: note.mentions }}
+        isFocused
+        onSend={save}
+        onCancel={onClose}
+      />
+      <div className="mt-2 empty:hidden">
+        <ChangedNotice
+          editing={editing}
+          words={(text) => ({ Note: text })}
+          onTake={setShown}
+          onKeep={() => void save(held)}
+        />
+      </div>
+    </>
   );
 }
 
@@ -127,6 +166,7 @@ export function NoteThread({ collaboration, thread, canWrite, actions }: ThreadP
                 onSend={async (words) => {
                   await actions.reply(thread.id, words);
                   setAnswering(false);
+                  return true;
                 }}
                 onCancel={() => setAnswering(false)}
               />

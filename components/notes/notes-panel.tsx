@@ -2,10 +2,12 @@
 
 import { useEffect, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
 import {
   changeNote,
   removeNote,
   seeNotes,
+  settleNote,
   useNotes,
   writeNote,
 } from '@/components/hooks/use-notes';
@@ -50,13 +52,14 @@ export function NotesPanel({ collaboration, on, initial }: NotesPanelProps) {
       await take(answer);
     } catch (reason) {
       setRefusal(sentenceOf(reason));
+      if (reason instanceof ChangedMeanwhile) await mutate();
     }
   };
   const actions: NoteActions = {
     reply: (to, words) => take(writeNote(collaboration, on, words, to)),
-    change: (id, words) => take(changeNote(collaboration, id, words)),
+    change: (id, opened, words) => take(changeNote(collaboration, id, opened, words)),
     remove: (id) => tell(removeNote(collaboration, id)),
-    settle: (id, isResolved) => tell(changeNote(collaboration, id, { isResolved })),
+    settle: (id, isResolved) => tell(settleNote(collaboration, id, isResolved)),
   };
   return (
     <section className="mt-10 max-w-[860px]" aria-labelledby="notes">
@@ -86,7 +89,10 @@ export function NotesPanel({ collaboration, on, initial }: NotesPanelProps) {
           collaboration={collaboration}
           label={notes.notes.length === 0 ? 'Begin with a note' : 'A new note'}
           verb="Write the note"
-          onSend={(words) => take(writeNote(collaboration, on, words))}
+          onSend={async (words) => {
+            await take(writeNote(collaboration, on, words));
+            return true;
+          }}
         />
       ) : (
         <p className="text-ink3 text-note">This collaboration is archived: notes can be read.</p>

@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useEditing } from '@/components/hooks/use-editing';
 import {
   changeRoles,
   removeMember,
@@ -10,6 +11,7 @@ import {
 } from '@/components/hooks/use-people';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { Notice } from '@/components/ui/notice';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
@@ -37,6 +39,19 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
       setRefusal(sentenceOf(reason));
     }
   };
+  const editing = useEditing<Role[]>(member?.roles ?? []);
+  const saveRoles = async (id: string) => {
+    setRefusal(null);
+    try {
+      await editing.attempt(roles, async (opened) => {
+        await changeRoles(collaboration, id, opened, roles);
+        onChanged();
+        onClose();
+      });
+    } catch (reason) {
+      setRefusal(sentenceOf(reason));
+    }
+  };
   if (!member) return null;
   return (
     <Dialog
@@ -48,7 +63,7 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
           <Button
             variant="primary"
             disabledReason={roles.length === 0 ? 'At least one role remains' : undefined}
-            onClick={() => void apply(() => changeRoles(collaboration, member.id, roles))}
+            onClick={() => void saveRoles(member.id)}
           >
             Save the roles
           </Button>
@@ -77,6 +92,14 @@ function RoleDialog({ collaboration, member, onClose, onChanged }: RoleDialogPro
         onChange={setRoles}
         offered={Object.keys(roleWords) as Role[]}
       />
+      <div className="mt-4 empty:hidden">
+        <ChangedNotice
+          editing={editing}
+          words={(held) => ({ Roles: held.map((role) => roleWords[role]).join(', ') })}
+          onTake={setRoles}
+          onKeep={() => void saveRoles(member.id)}
+        />
+      </div>
       {member.can.suspend && (
         <p className="mt-4 text-ink3 text-note">
           {member.suspendedAt === null

@@ -4,6 +4,7 @@ import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
 import { sharePopulation } from '@/components/hooks/use-populations';
 import { formatDay } from '@/components/runs/time-words';
 import { Notice } from '@/components/ui/notice';
@@ -30,6 +31,7 @@ export function VersionList({
       router.refresh();
     } catch (reason) {
       setProblem(sentenceOf(reason));
+      if (reason instanceof ChangedMeanwhile) router.refresh();
     }
   };
   return (

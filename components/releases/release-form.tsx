@@ -3,9 +3,11 @@
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useEditing } from '@/components/hooks/use-editing';
 import { createRelease, updateRelease } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
 import { CheckboxField } from '@/components/ui/checkbox-field';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -13,24 +15,14 @@ import { SelectField } from '@/components/ui/select-field';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
 import { licences } from '@/lib/schemas/licences';
-import type { Author } from '@/lib/schemas/releases';
 import { AuthorFields } from './author-fields';
+import { draftOf, draftWords, type ReleaseDraft } from './release-draft';
 
 /** A frozen run that may be part of a release. */
 export interface FrozenChoice {
   id: string;
   name: string;
   sentence: string;
-}
-
-export interface ReleaseDraft {
-  title: string;
-  authors: Author[];
-  abstract: string;
-  licence: string;
-  note: string;
-  runIds: string[];
-  replacesId: string | null;
 }
 
 interface ReleaseFormProps {
@@ -40,14 +32,15 @@ interface ReleaseFormProps {
   published: { id: string; key: string; title: string }[];
   initial: ReleaseDraft;
   /** Id of the draft that is changed; a new one without it. */
-  editing?: { id: string; key: string };
+  changed?: { id: string; key: string };
 }
 
 /** Title, people, words and runs of a release. */
 export function ReleaseForm(props: ReleaseFormProps) {
-  const { collaboration, choices, published, initial, editing } = props;
+  const { collaboration, choices, published, initial, changed } = props;
   const router = useRouter();
   const [draft, setDraft] = useState(initial);
+  const editing = useEditing(initial);
   const [problem, setProblem] = useState<string>();
   const [isBusy, setBusy] = useState(false);
   const set = (change: Partial<ReleaseDraft>) => setDraft({ ...draft, ...change });
@@ -57,6 +50,8 @@ export function ReleaseForm(props: ReleaseFormProps) {
         ? draft.runIds.filter((one) => one !== id)
         : [...draft.runIds, id],
     });
+  const nameOf = (id: string) =>
+    choices.find((one) => one.id === id)?.name ?? published.find((one) => one.id === id)?.key ?? id;
   const save = async () => {
     setProblem(undefined);
     const authors = draft.authors
@@ -75,11 +70,14 @@ export function ReleaseForm(props: ReleaseFormProps) {
     }
     setBusy(true);
     try {
-      const made = editing
-        ? await updateRelease(collaboration, editing.id, parsed.data)
-        : await createRelease(collaboration, parsed.data);
-      router.push(`/${collaboration}/releases/${made.key}`);
-      router.refresh();
+      const isStored = await editing.attempt(draft, async (opened) => {
+        const made = changed
+          ? await updateRelease(collaboration, changed.id, draftOf, opened, parsed.data)
+          : await createRelease(collaboration, parsed.data);
+        router.push(`/${collaboration}/releases/${made.key}`);
+        router.refresh();
+      });
+      if (!isStored) setBusy(false);
     } catch (reason) {
       setProblem(sentenceOf(reason));
       setBusy(false);
@@ -160,11 +158,17 @@ export function ReleaseForm(props: ReleaseFormProps) {
             onChange={(event) => set({ replacesId: event.target.value || null })}
           />
         )}
-        {editing && (
+        {changed && (
           <Notice tone="warn" title="Both signatures are asked for again.">
             They hold for what was read when they were given.
           </Notice>
         )}
+        <ChangedNotice
+          editing={editing}
+          words={(one) => draftWords(one, nameOf)}
+          onTake={setDraft}
+          onKeep={() => void save()}
+        />
         {problem !== undefined && (
           <Notice tone="bad" title="It was not saved." isAnnounced>
             {problem}
@@ -172,9 +176,9 @@ export function ReleaseForm(props: ReleaseFormProps) {
         )}
         <div className="flex flex-wrap gap-2">
           <Button type="submit" variant="primary" isBusy={isBusy}>
-            {editing ? `Save ${editing.key}` : 'Save the draft'}
+            {changed ? `Save ${changed.key}` : 'Save the draft'}
           </Button>
-          <LinkButton href={`/${collaboration}/releases${editing ? `/${editing.key}` : ''}`}>
+          <LinkButton href={`/${collaboration}/releases${changed ? `/${changed.key}` : ''}`}>
             Leave it
           </LinkButton>
         </div>

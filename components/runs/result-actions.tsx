@@ -4,15 +4,18 @@ import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { copyAnalysis } from '@/components/hooks/use-analyses';
+import { useEditing } from '@/components/hooks/use-editing';
 import { startRun } from '@/components/hooks/use-runs';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { LinkButton } from '@/components/ui/link-button';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { ExportMenu } from './export-menu';
 import type { LiveSetting } from './live-setting';
-import { copyAndRun, saveAndRun } from './save-setting';
+import { recipeWords } from './recipe-words';
+import { copyAndRun, recipeOf, saveAndRun } from './save-setting';
 
 interface KeptActionsProps {
   collaboration: string;
@@ -46,17 +49,20 @@ export function ResultActions({ setting, isUnsaved, onUndo, ...kept }: ResultAct
 }
 
 type Work = 'save' | 'copy' | 'run';
+/** In place of a key: nothing was stored, and the person decides. */
+const HELD = Symbol('held');
 
 /** One piece of work at a time; a key that it answers is where the person goes on. */
 function useWork(collaboration: string, onSaved: () => void) {
   const router = useRouter();
   const [work, setWork] = useState<Work>();
   const [problem, setProblem] = useState<string>();
-  const perform = async (kind: Work, task: () => Promise<string | undefined>) => {
+  const perform = async (kind: Work, task: () => Promise<string | typeof HELD | undefined>) => {
     setWork(kind);
     setProblem(undefined);
     try {
       const key = await task();
+      if (key === HELD) return;
       if (key !== undefined) router.push(`/${collaboration}/analyses/${key}`);
       else onSaved();
     } catch (reason) {
@@ -88,10 +94,15 @@ function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
   const { work, perform, dialog } = useWork(collaboration, onSaved);
   const isOwn = mayChange(analysis);
   const next = nextNumber(analysis);
+  // Drawn from the first change on: this recipe is the one that the change began from.
+  const editing = useEditing(analysis.recipe);
   const save = () =>
     perform('save', async () => {
-      await saveAndRun(collaboration, analysis, setting);
-      return undefined;
+      const mine = await recipeOf(editing.opened(), setting);
+      const isStored = await editing.attempt(mine, (recipe) =>
+        saveAndRun(collaboration, { ...analysis, recipe }, setting),
+      );
+      return isStored ? undefined : HELD;
     });
   const saveCopy = () => perform('copy', () => copyAndRun(collaboration, analysis, setting));
   return (
@@ -121,6 +132,23 @@ function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
         </Button>
       )}
       {dialog}
+      <Dialog
+        isOpen={editing.conflict !== null}
+        onClose={editing.leave}
+        title={`${analysis.key} is another one by now`}
+        actions={<Button onClick={editing.leave}>Back to the result</Button>}
+      >
+        <ChangedNotice
+          editing={editing}
+          words={(recipe) => recipeWords(recipe, analysis)}
+          onTake={() => {
+            editing.leave();
+            onUndo();
+            onSaved();
+          }}
+          onKeep={() => void save()}
+        />
+      </Dialog>
     </>
   );
 }

@@ -1,4 +1,4 @@
-import { copyAnalysis, updateAnalysis } from '@/components/hooks/use-analyses';
+import { changeRecipe, copyAnalysis, requireRecipe } from '@/components/hooks/use-analyses';
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { startRun } from '@/components/hooks/use-runs';
 import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
@@ -12,7 +12,9 @@ import { isSameDefinition, type LiveSetting } from './live-setting';
  * Ranges and indices belong to a population, so a change of theirs makes a version of it; whoever
  * may not add a version gets a population of their own.
  *
- * @throws ApiProblem at the first step that the server refuses
+ * @param analysis its recipe is the one that the setting began from
+ * @throws ChangedMeanwhile before anything is stored, where the recipe is another one by now;
+ *   ApiProblem at the first step that the server refuses
  */
 export async function saveAndRun(
   collaboration: string,
@@ -21,25 +23,27 @@ export async function saveAndRun(
 ): Promise<void> {
   const { definition, ...asked } = setting;
   const before = analysis.population.definition;
+  await requireRecipe(collaboration, analysis.key, analysis.recipe);
   const population: { id: string } =
     isPlainPowerLaw(before) && isSameDefinition(definition, before)
       ? analysis.population
       : await storePopulation(collaboration, analysis.population, setting);
-  const { analysisRecipeSchema } = await import('@/lib/schemas/analyses');
-  await updateAnalysis(collaboration, analysis.key, {
-    recipe: analysisRecipeSchema.parse({
-      ...withoutOptions(analysis.recipe),
-      ...asked,
-      populationId: population.id,
-    }),
-  });
+  const recipe = await recipeOf({ ...analysis.recipe, populationId: population.id }, asked);
+  await changeRecipe(collaboration, analysis.key, analysis.recipe, recipe);
   await startRun(collaboration, analysis.key);
 }
 
 /** A setting that has neither candidates nor a background takes them out of the recipe. */
-function withoutOptions(recipe: AnalysisRecipe) {
+export async function recipeOf(
+  recipe: AnalysisRecipe,
+  {
+    definition: _ofPopulation,
+    ...asked
+  }: Partial<Pick<LiveSetting, 'definition'>> & Omit<LiveSetting, 'definition'>,
+): Promise<AnalysisRecipe> {
   const { candidates: _candidates, background: _background, ...rest } = recipe;
-  return rest;
+  const { analysisRecipeSchema } = await import('@/lib/schemas/analyses');
+  return analysisRecipeSchema.parse({ ...rest, ...asked });
 }
 
 /** The same on a copy, which belongs to whoever made it: its key. */

@@ -7,14 +7,7 @@ import { SelectField } from '@/components/ui/select-field';
 import type { CombinationRule } from '@/lib/schemas/combinations';
 import type { ChangeSettings } from '@/lib/schemas/settings';
 import type { SettingsPartProps } from './place-form';
-
-const ruleLabels: Record<CombinationRule, string> = {
-  default: 'same position where curves allow it, else deepest',
-  'same-position': 'same position: no movement between the epochs',
-  deepest: 'the deepest map',
-  independent: 'independent: each survey is a new chance',
-  refuse: 'refuse: no star may be in two surveys',
-};
+import { ruleLabels } from './settings-parts';
 
 type Two = 'by-itself' | 'on' | 'off';
 const twoOf = (chosen: boolean | null): Two =>

@@ -3,7 +3,10 @@
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { changeSettings } from '@/components/hooks/use-settings';
+import { pick } from '@/components/hooks/change';
+import { useEditing } from '@/components/hooks/use-editing';
+import { changeSettings, type SettingsPart } from '@/components/hooks/use-settings';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -17,6 +20,7 @@ import { FailedMail } from './failed-mail';
 import { LeavingPart } from './leaving-part';
 import { PlaceForm } from './place-form';
 import { RulesForm } from './rules-form';
+import { partOf, rulesKey, settingsWords, storedOf } from './settings-parts';
 
 interface SettingsScreenProps {
   collaboration: string;
@@ -38,19 +42,28 @@ export function SettingsScreen(props: SettingsScreenProps) {
   const [saved, setSaved] = useState<string | null>(null);
   const router = useRouter();
   const moment = useMoment();
-  const save = async (change: ChangeSettings, words: string) => {
+  const editing = useEditing<SettingsPart>({});
+  const [asked, setAsked] = useState<{ change: ChangeSettings; words: string } | null>(null);
+  const store = async (opened: SettingsPart, { change, words }: NonNullable<typeof asked>) => {
     setRefusal(null);
     setSaved(null);
+    setAsked({ change, words });
+    editing.begin(opened);
     try {
-      const next = await changeSettings(settings.slug, change);
-      setSettings(next);
-      setSaved(words);
-      if (next.slug !== collaboration) router.replace(`/${next.slug}/settings`);
-      else router.refresh();
+      await editing.attempt(partOf(change), async () => {
+        const next = await changeSettings(settings.slug, opened, change);
+        // Only what was saved: another form keeps what it was opened with.
+        setSettings({ ...settings, ...storedOf(next), ...pick(next, opened as SettingsView) });
+        setSaved(words);
+        if (next.slug !== collaboration) router.replace(`/${next.slug}/settings`);
+        else router.refresh();
+      });
     } catch (reason) {
       setRefusal(sentenceOf(reason));
     }
   };
+  const save = (change: ChangeSettings, words: string) =>
+    store(pick(settings, partOf(change) as SettingsView), { change, words });
   const { can, archivedAt } = settings;
   const shared = { settings, save };
   return (
@@ -70,6 +83,12 @@ export function SettingsScreen(props: SettingsScreenProps) {
             Everything can be read and exported; nothing changes.
           </Notice>
         )}
+        <ChangedNotice
+          editing={editing}
+          words={(part) => settingsWords(part, (at) => moment(at, 'day'))}
+          onTake={(now) => setSettings({ ...settings, ...now })}
+          onKeep={() => asked && void store(editing.opened(), asked)}
+        />
         {refusal !== null && (
           <Notice tone="bad" title="Nothing was saved." isAnnounced>
             {refusal}
@@ -88,7 +107,7 @@ export function SettingsScreen(props: SettingsScreenProps) {
         </section>
         <section className="min-w-0">
           <SectionOpener title="Rules" context="what new work begins with" />
-          <RulesForm key={JSON.stringify(settings)} {...shared} analyses={analyses} />
+          <RulesForm key={rulesKey(settings)} {...shared} analyses={analyses} />
         </section>
         {failed !== null && (
           <section className="min-w-0">

@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
 import { markTarget } from '@/components/hooks/use-surveys';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import type { TargetView } from '@/lib/schemas/surveys';
@@ -18,10 +19,12 @@ export function ChosenForCompanion({ collaboration, target, onChanged }: ChosenF
   const mark = async (selectedForCompanion: boolean) => {
     setRefusal(undefined);
     try {
-      await markTarget(collaboration, target.id, { selectedForCompanion });
+      const opened = { selectedForCompanion: target.selectedForCompanion };
+      await markTarget(collaboration, target.id, opened, { selectedForCompanion });
       onChanged();
     } catch (failure) {
       setRefusal(sentenceOf(failure));
+      if (failure instanceof ChangedMeanwhile) onChanged();
     }
   };
   return (

@@ -60,7 +60,7 @@ export function ImportScreen({
     try {
       // What the server has is read again there.
       const upload = entry.upload
-        ? await changeUpload(collaboration, entry.upload.id, settings)
+        ? await changeUpload(collaboration, entry.upload.id, entry.upload.settings, settings)
         : await sendUpload(collaboration, entry.file, about, (sent) => change(entry.key, { sent }));
       change(entry.key, { state: 'read', upload });
     } catch (reason) {

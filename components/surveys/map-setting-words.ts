@@ -53,3 +53,24 @@ function describeRules(settings: MapSettings): string[] {
   if (fieldAge) words.push(`field age ${fieldAge.minMyr}–${fieldAge.maxMyr} Myr`);
   return words;
 }
+
+/** Each setting by its label, to be read beside those of somebody else. */
+export function mapSettingsWords(
+  settings: MapSettings,
+  tables: readonly { id: string; name: string }[],
+): Record<string, string> {
+  const { cooling, massMjup, semiMajorAxisAu, massOutsideTable, ageOutsideTable } = settings;
+  const table = cooling.kind === 'table' && tables.find(({ id }) => id === cooling.coolingTableId);
+  return {
+    'Cooling relation': cooling.kind === 'built-in' ? 'built in' : table ? table.name : 'a table',
+    Eccentricities: describeEccentricity(settings.eccentricity),
+    'Detection at the threshold': settings.threshold,
+    Rules: describeRules(settings).join('; ') || 'none',
+    'Outside the table': `mass ${massOutsideTable}, age ${ageOutsideTable}`,
+    Masses: axisWords(massMjup, 'M_Jup'),
+    'Semi-major axes': axisWords(semiMajorAxisAu, 'au'),
+  };
+}
+
+const axisWords = ({ min, max, count }: MapSettings['massMjup'], unit: string) =>
+  `${count} from ${min} to ${max} ${unit}`;

@@ -6,10 +6,12 @@ import { ContrastChart } from '@/components/charts/contrast-chart';
 import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useEditing } from '@/components/hooks/use-editing';
 import { markTarget, useMap } from '@/components/hooks/use-surveys';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
@@ -54,18 +56,34 @@ function LeaveOut({
   const [isOpen, setOpen] = useState(false);
   const [reason, setReason] = useState('');
   const [refusal, setRefusal] = useState<string | null>(null);
+  const editing = useEditing(target.leftOutReason);
   const apply = async (next: string | null) => {
     setRefusal(null);
     try {
-      await markTarget(collaboration, target.id, { leftOutReason: next });
-      setOpen(false);
-      onChanged();
+      await editing.attempt(next, async (leftOutReason) => {
+        await markTarget(collaboration, target.id, { leftOutReason }, { leftOutReason: next });
+        setOpen(false);
+        onChanged();
+      });
     } catch (failure) {
       setRefusal(sentenceOf(failure));
     }
   };
+  const newer = (
+    <ChangedNotice
+      editing={editing}
+      words={(held) => ({ Reason: held ?? 'none: it is in' })}
+      onTake={onChanged}
+      onKeep={() => void apply(target.leftOutReason === null ? reason : null)}
+    />
+  );
   if (target.leftOutReason !== null) {
-    return <TextAction onClick={() => void apply(null)}>Take it back in</TextAction>;
+    return (
+      <>
+        <TextAction onClick={() => void apply(null)}>Take it back in</TextAction>
+        {newer}
+      </>
+    );
   }
   return (
     <>
@@ -100,6 +118,7 @@ function LeaveOut({
           maxLength={300}
           onChange={(event) => setReason(event.target.value)}
         />
+        {newer}
         {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       </Dialog>
     </>

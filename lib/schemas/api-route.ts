@@ -52,5 +52,5 @@ export const takesKey = (one: ApiRoute): boolean =>
 /** Whether a write may ask that nothing has changed: where reading the same address gives a tag. */
 export const takesIfMatch = (one: ApiRoute, all: readonly ApiRoute[]): boolean =>
   (one.method === 'patch' || one.method === 'delete') &&
-  ofTeam(one) &&
+  (ofTeam(one) || one.method === 'patch') &&
   all.some(({ method, path, answer }) => method === 'get' && path === one.path && answer);

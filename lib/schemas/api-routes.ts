@@ -112,6 +112,7 @@ const people: ApiRoute[] = [
   route('get', `${team}/members`, 'read', 'Members and their roles', {
     answer: listOf('members', memberSchema),
   }),
+  route('get', `${team}/members/{member}`, 'read', 'One member', { answer: memberSchema }),
   route('patch', `${team}/members/{member}`, 'write', 'Change the roles of a member', {
     body: changeRolesSchema,
     answer: memberSchema,

@@ -38,6 +38,9 @@ export const exerciseRoutes: readonly ApiRoute[] = [
     status: 201,
     answer: submissionSchema,
   }),
+  route('get', `${one}/submissions/{submission}`, 'read', 'A submission', {
+    answer: submissionSchema,
+  }),
   route('patch', `${one}/submissions/{submission}`, 'write', 'Comment on a submission', {
     body: commentSubmissionSchema,
     answer: submissionSchema,

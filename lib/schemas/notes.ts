@@ -69,6 +69,12 @@ export const noteSchema = z.object({
   replies: z.array(replySchema),
 });
 export type NoteView = z.infer<typeof noteSchema>;
+/** Of a note that begins a thread also whether it is settled. */
+export const oneNoteSchema = z.object({
+  ...noteFields,
+  resolved: noteSchema.shape.resolved.optional(),
+});
+export type OneNote = z.infer<typeof oneNoteSchema>;
 export const noteListSchema = z.object({
   /** Threads, the oldest first. */
   notes: z.array(noteSchema),

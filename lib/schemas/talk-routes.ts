@@ -8,7 +8,13 @@ import {
   stopMailSchema,
   stoppedMailSchema,
 } from './mail';
-import { changeNoteSchema, noteItemSchema, noteListSchema, writeNoteSchema } from './notes';
+import {
+  changeNoteSchema,
+  noteItemSchema,
+  noteListSchema,
+  oneNoteSchema,
+  writeNoteSchema,
+} from './notes';
 import { changeSettingsSchema, settingsSchema } from './settings';
 import { workSchema } from './work';
 
@@ -26,6 +32,7 @@ export const talkRoutes: ApiRoute[] = [
   route('post', `${team}/notes/seen`, 'write', 'Say that the notes on a thing are read', {
     body: noteItemSchema,
   }),
+  route('get', `${team}/notes/{note}`, 'read', 'One note', { answer: oneNoteSchema }),
   route('patch', `${team}/notes/{note}`, 'write', 'Change your note, or settle a thread', {
     body: changeNoteSchema,
     answer: noteListSchema,

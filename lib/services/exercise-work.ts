@@ -116,6 +116,20 @@ export async function submitExercise(
   });
 }
 
+/** One submission, for whoever may answer it. */
+export async function getSubmission(
+  actor: Actor,
+  key: string,
+  submissionId: string,
+): Promise<SubmissionView> {
+  demand(actor, 'make-exercise');
+  const { participants } = await getExercise(actor, key);
+  const all = participants.flatMap(({ submissions }) => submissions);
+  const found = all.find(({ id }) => id === submissionId);
+  if (!found) throw new NotFound('submission');
+  return found;
+}
+
 /** Answers a submission; a comment may be written anew, what was handed in may not. */
 export async function commentSubmission(
   actor: Actor,

@@ -61,6 +61,13 @@ export async function listMembers(actor: Actor): Promise<{ members: MemberView[]
   return { members: await inTransaction((transaction) => readMembers(actor, transaction)) };
 }
 
+export async function getMember(actor: Actor, memberId: string): Promise<MemberView> {
+  const { members } = await listMembers(actor);
+  const member = members.find(({ id }) => id === memberId);
+  if (!member) throw new NotFound('member');
+  return member;
+}
+
 /** The member and all owners, locked: two owners cannot step down at the same moment. */
 async function lockMember(
   actor: Actor,

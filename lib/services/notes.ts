@@ -4,7 +4,15 @@ import { demand } from '@/lib/access/permissions';
 import { AccessError, Conflict, InputError, NotFound } from '@/lib/errors';
 import { withdrawMessages } from '@/lib/mail/outbox';
 import { idSchema } from '@/lib/schemas/common';
-import type { ChangeNote, NoteItem, NoteItemKind, NoteList, WriteNote } from '@/lib/schemas/notes';
+import {
+  type ChangeNote,
+  type NoteItem,
+  type NoteItemKind,
+  type NoteList,
+  type OneNote,
+  oneNoteSchema,
+  type WriteNote,
+} from '@/lib/schemas/notes';
 import { database, inTransaction, NoteRow } from '@/models';
 import { recordAudit } from './audit';
 import { type FoundItem, findItem } from './note-items';
@@ -149,6 +157,22 @@ async function audit(
   const { kind, id, label } = item;
   const details = { noteId: note.id };
   await recordAudit(actor, action, { kind, id }, `${words} ${label}`, transaction, details);
+}
+
+/** One note, without the answers to it. */
+export async function getNote(actor: Actor, id: string): Promise<OneNote> {
+  demand(actor, 'read');
+  const { collaborationId } = actor;
+  const on = await inTransaction(async (transaction) => {
+    const isId = idSchema.safeParse(id).success;
+    const row = isId && (await NoteRow.findOne({ where: { id, collaborationId }, transaction }));
+    if (!row) throw new NotFound('note');
+    return keyOf(row, transaction);
+  });
+  const { notes } = await listNotes(actor, on);
+  const found = notes.flatMap((note) => [note, ...note.replies]).find((note) => note.id === id);
+  if (!found) throw new NotFound('note');
+  return oneNoteSchema.parse(found);
 }
 
 async function lockNote(

@@ -47,6 +47,8 @@ export async function signUp(input: SignUp, address?: string): Promise<Me> {
 
 /** The person and where they are a member; through a token only the token's collaboration. */
 export async function getMe(person: KnownPerson): Promise<Me> {
+  // Read anew: who waited for another change of the same account knows the name from before it.
+  const row = await PersonRow.findByPk(person.personId, { rejectOnEmpty: true });
   const collaborations = await database().query(
     `select c.slug, c.name, m.roles
        from member m join collaboration c on c.id = m.collaboration_id
@@ -55,7 +57,7 @@ export async function getMe(person: KnownPerson): Promise<Me> {
     { bind: [person.personId, person.tokenCollaborationId ?? null], type: QueryTypes.SELECT },
   );
   return meSchema.parse({
-    person: { id: person.personId, name: person.personName, email: person.email },
+    person: { id: row.id, name: row.name, email: row.email },
     collaborations,
   });
 }
@@ -66,7 +68,7 @@ export async function updateMe(person: KnownPerson, input: { name: string }): Pr
     const item = { kind: 'person', id: person.personId };
     await recordAudit(person, 'change-name', item, 'changed their name', transaction);
   });
-  return getMe({ ...person, personName: input.name });
+  return getMe(person);
 }
 
 /** A new password ends every other session of the person. */

@@ -70,6 +70,7 @@ export const routePermissions: Record<string, RoutePermission> = {
   'get ': read(),
   'patch ': manage({ body: () => ({ name: 'Another name' }) }),
   'get /members': read(),
+  'get /members/{member}': read(),
   'patch /members/{member}': changeRoles({ body: () => ({ roles: ['student'] }) }),
   'post /members/{member}/suspension': changeRoles({ body: () => ({ isSuspended: true }) }),
   'delete /members/{member}': changeRoles(),
@@ -298,6 +299,7 @@ export const routePermissions: Record<string, RoutePermission> = {
   'post /exercises/{exercise}/submissions': as('submit-exercise')({
     body: ({ run }) => ({ runId: run }),
   }),
+  'get /exercises/{exercise}/submissions/{submission}': setExercise(),
   'patch /exercises/{exercise}/submissions/{submission}': setExercise({
     body: () => ({ comment: 'Well argued' }),
   }),
@@ -308,6 +310,7 @@ export const routePermissions: Record<string, RoutePermission> = {
     body: (ids) => ({ on: onSurvey(ids), body: 'Which ages?', replyTo: ids.note }),
   }),
   'post /notes/seen': read({ body: onSurvey }),
+  'get /notes/{note}': read(),
   'patch /notes/{note}': as('write-note')({ body: () => ({ isResolved: true }) }),
   'delete /notes/{note}': as('write-note')(),
   'get /activity': read({ query: ({ survey }) => ({ item: survey }) }),

@@ -33,6 +33,14 @@ interface CollaborationOptions<B, Q> extends RouteOptions<B, Q> {
   tellsSecret?: boolean;
 }
 
+interface PersonOptions<B, Q> extends RouteOptions<B, Q> {
+  scope: Scope;
+  /** No token may. */
+  sessionOnly?: boolean;
+  /** As in a collaboration. */
+  current?: (context: Omit<Asked<B, Q>, 'body'> & { person: KnownPerson }) => Promise<unknown>;
+}
+
 interface Asked<B, Q> {
   params: Record<string, string>;
   body: B;
@@ -160,7 +168,9 @@ export function collaborationRoute<B = undefined, Q = undefined>(
         return answerKept(request, asked, options.status ?? 200, () => work(asked));
       };
       const isGuarded = current !== undefined && isWrite(request);
-      const result = await (isGuarded ? oneAfterAnother(actor, asked.params, perform) : perform());
+      const result = await (isGuarded
+        ? oneAfterAnother(actor.collaborationId, asked.params, perform)
+        : perform());
       if (paged !== undefined) {
         seen.link = nextLink(request, asked.query, result, paged, order) ?? undefined;
       }
@@ -171,12 +181,12 @@ export function collaborationRoute<B = undefined, Q = undefined>(
 
 /** A handler for a signed-in person, outside of any collaboration. */
 export function personRoute<B = undefined, Q = undefined>(
-  options: RouteOptions<B, Q> & { scope: Scope; sessionOnly?: boolean },
+  options: PersonOptions<B, Q>,
   work: (context: Asked<B, Q> & { person: KnownPerson }) => Promise<unknown>,
 ): RouteHandler {
   return handler(
     options.sessionOnly ? 'session' : options.scope,
-    described(options),
+    { ...described(options), takesIfMatch: options.current !== undefined },
     (request, context) =>
       answer(request, options.status ?? 200, async (seen) => {
         const person = await admit(request, options, seen);
@@ -188,7 +198,13 @@ export function personRoute<B = undefined, Q = undefined>(
         requireScope(person, options.scope);
         await countOwn(options, person.personId, seen);
         refuseKey(request);
-        return work({ ...(await readRequest(request, context, options)), person });
+        const asked = { ...(await readRequest(request, context, options)), person };
+        const { current } = options;
+        const perform = async () => {
+          await requireUnchanged(request, current && (() => current(asked)));
+          return work(asked);
+        };
+        return current ? oneAfterAnother(person.personId, asked.params, perform) : perform();
       }),
   );
 }

@@ -2,6 +2,7 @@
 
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { ChangedMeanwhile } from '@/components/hooks/change';
 import { changeMailPreference } from '@/components/hooks/use-settings';
 import { CheckboxField } from '@/components/ui/checkbox-field';
 import { Notice } from '@/components/ui/notice';
@@ -18,6 +19,14 @@ export function MailSwitches({ initial }: { initial: MailPreferences }) {
       setPreferences(await changeMailPreference(given));
     } catch (reason) {
       setRefusal(sentenceOf(reason));
+      // The other window stopped or wanted it already: the switch shows that now.
+      if (reason instanceof ChangedMeanwhile) {
+        setPreferences({
+          preferences: preferences.map((one) =>
+            one.kind === given.kind ? { ...one, isWanted: given.isWanted } : one,
+          ),
+        });
+      }
     }
   };
   return (

@@ -3,8 +3,10 @@
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useEditing } from '@/components/hooks/use-editing';
 import { changeName } from '@/components/hooks/use-me';
 import { Button } from '@/components/ui/button';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
 
@@ -12,6 +14,7 @@ import { TextField } from '@/components/ui/text-field';
 export function ProfileForm({ initial, email }: { initial: string; email: string }) {
   const [name, setName] = useState(initial);
   const [stored, setStored] = useState(initial);
+  const editing = useEditing(initial);
   const [refusal, setRefusal] = useState<string | null>(null);
   const [isSaved, setSaved] = useState(false);
   const router = useRouter();
@@ -19,10 +22,13 @@ export function ProfileForm({ initial, email }: { initial: string; email: string
     setRefusal(null);
     setSaved(false);
     try {
-      const { person } = await changeName(name);
-      setStored(person.name);
-      setSaved(true);
-      router.refresh();
+      await editing.attempt(name, async (opened) => {
+        const { person } = await changeName(opened, name);
+        editing.begin(person.name);
+        setStored(person.name);
+        setSaved(true);
+        router.refresh();
+      });
     } catch (reason) {
       setRefusal(sentenceOf(reason));
     }
@@ -48,6 +54,15 @@ export function ProfileForm({ initial, email }: { initial: string; email: string
         <span className="block text-ink2">E-mail</span>
         <span className="[overflow-wrap:anywhere]">{email}</span>
       </p>
+      <ChangedNotice
+        editing={editing}
+        words={(text) => ({ Name: text })}
+        onTake={(now) => {
+          setName(now);
+          setStored(now);
+        }}
+        onKeep={() => void save()}
+      />
       {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
       {isSaved && <Notice tone="ok" title="Your name is saved." isAnnounced />}
       <div>

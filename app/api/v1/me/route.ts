@@ -5,6 +5,11 @@ import { getMe, updateMe } from '@/lib/services/people';
 export const GET = personRoute({ scope: 'read' }, ({ person }) => getMe(person));
 
 export const PATCH = personRoute(
-  { scope: 'write', sessionOnly: true, body: updateMeSchema },
+  {
+    scope: 'write',
+    sessionOnly: true,
+    body: updateMeSchema,
+    current: ({ person }) => getMe(person),
+  },
   ({ person, body }) => updateMe(person, body),
 );

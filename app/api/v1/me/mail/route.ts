@@ -7,6 +7,11 @@ export const GET = personRoute({ scope: 'read', sessionOnly: true }, ({ person }
 );
 
 export const PATCH = personRoute(
-  { scope: 'write', sessionOnly: true, body: changeMailPreferenceSchema },
+  {
+    scope: 'write',
+    sessionOnly: true,
+    body: changeMailPreferenceSchema,
+    current: ({ person }) => getMailPreferences(person),
+  },
   ({ person, body }) => changeMailPreference(person, body),
 );

@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { currentActor } from '@/app/session';
+import { draftOf } from '@/components/releases/release-draft';
 import { ReleaseForm } from '@/components/releases/release-form';
 import { PageTitle } from '@/components/ui/page-title';
 import { listReleases } from '@/lib/services/releases/describe';
@@ -19,7 +20,6 @@ export default async function EditReleasePage({ params }: PageProps) {
   const release = await foundRelease(actor, key);
   if (!release.can.change) notFound();
   const [choices, { releases }] = await Promise.all([listFrozenRuns(actor), listReleases(actor)]);
-  const { title, authors, abstract, licence, note, runs, replaces } = release;
   return (
     <>
       <PageTitle
@@ -34,16 +34,8 @@ export default async function EditReleasePage({ params }: PageProps) {
         collaboration={actor.collaboration}
         choices={choices}
         published={releases.filter(({ state, replacedBy }) => state === 'published' && !replacedBy)}
-        initial={{
-          title,
-          authors,
-          abstract,
-          licence,
-          note,
-          runIds: runs.map(({ id }) => id),
-          replacesId: replaces?.id ?? null,
-        }}
-        editing={{ id: release.id, key: release.key }}
+        initial={draftOf(release)}
+        changed={{ id: release.id, key: release.key }}
       />
     </>
   );
