@@ -159,19 +159,54 @@ function defineModels(sequelize: Sequelize): void {
   associate();
 }
 
+/** Longer than any page or answer takes; what ends here was asked too much, or waits for a lock. */
+const WEB_STATEMENT_MS = 30_000;
+
 function open(databaseUrl: string, poolSize: number): Sequelize {
   joinWholeRequest(Sequelize);
-  return new Sequelize(databaseUrl, {
+  const sequelize = new Sequelize(databaseUrl, {
     dialect: 'postgres',
     logging: false,
     pool: { max: poolSize, min: 0, idle: 5_000 },
-    dialectOptions: { idle_in_transaction_session_timeout: 60_000 },
+    dialectOptions: {
+      idle_in_transaction_session_timeout: 60_000,
+      statement_timeout: holder.rareboundTakesItsTime ? 0 : WEB_STATEMENT_MS,
+    },
   });
+  askInTurn(sequelize);
+  return sequelize;
+}
+
+/** A worker's statements end by themselves, however long they take; to be said before the first. */
+export function takeTime(): void {
+  holder.rareboundTakesItsTime = true;
+}
+
+/** A transaction has one connection, which answers one statement at a time: the next one waits here. */
+function askInTurn(sequelize: Sequelize): void {
+  const ask = sequelize.query.bind(sequelize) as (
+    sql: unknown,
+    options?: { transaction?: Transaction | null },
+  ) => Promise<unknown>;
+  const last = new WeakMap<Transaction, Promise<unknown>>();
+  const inTurn: typeof ask = (sql, options) => {
+    const { transaction = wholeRequest().getStore() } = options ?? {};
+    if (!transaction) return ask(sql, options);
+    const before = last.get(transaction);
+    const answer = before ? before.then(() => ask(sql, options)) : ask(sql, options);
+    last.set(
+      transaction,
+      answer.catch(() => undefined),
+    );
+    return answer;
+  };
+  sequelize.query = inTurn as typeof sequelize.query;
 }
 
 const holder = globalThis as typeof globalThis & {
   rareboundDatabase?: Sequelize;
   rareboundTransaction?: AsyncLocalStorage<Transaction>;
+  rareboundTakesItsTime?: boolean;
 };
 
 /** The transaction that a request as a whole runs in, where it has one. */

@@ -5,7 +5,7 @@ import { Logger, run, type TaskList, type WorkerEvents } from 'graphile-worker';
 import { config } from '@/lib/config';
 import { deliverySchema, type JobKind } from '@/lib/queue/kinds';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
-import { closeDatabase } from '@/models';
+import { closeDatabase, takeTime } from '@/models';
 import { startDepartures } from './departures';
 import { startHeart } from './heart';
 import { describeError, log } from './log';
@@ -37,6 +37,7 @@ const NICENESS = 10;
 
 async function main(): Promise<void> {
   os.setPriority(NICENESS);
+  takeTime();
   const pool = openPool({ folder: path.join(__dirname, 'compute'), preload: 'complete-maps' });
   const shutdown = new AbortController();
   const workerIds = new Set<string>();

@@ -8,6 +8,7 @@ const UNAVAILABLE = /^Sequelize(Connection|HostNotFound|HostNotReachable|Connect
 const LOST =
   /^(57P0[1-5]|08...|25P03|53[23]00|ECONNRESET|ECONNREFUSED|EPIPE)$|Connection terminated|connection error|Client was closed/;
 const DISK_FULL = '53100';
+const CUT_OFF = '57014';
 
 /** Whether the database was not there, or went away in between. */
 export function isDatabaseAway(error: unknown): boolean {
@@ -36,6 +37,10 @@ export function databaseFault(error: unknown): unknown {
       503,
       'The disk of the database is full; nothing was stored. An owner of this server must make room',
     );
+  }
+  if (codeOf(error) === CUT_OFF) {
+    const words = 'The database took too long, and nothing was stored. Try again in a moment';
+    return new LabError('took-too-long', 503, words);
   }
   if (UNAVAILABLE.test(error.name)) {
     return new LabError('unavailable', 503, 'The database does not answer; nothing was stored');
