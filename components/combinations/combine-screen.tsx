@@ -158,8 +158,8 @@ export function CombineScreen({
               <CombinationReport preview={preview} />
             ) : (
               // What follows stays out of sight, so that nothing jumps once the counts are there.
-              <p className={`text-ink3 ${definition ? 'min-h-screen' : ''}`}>
-                {definition ? 'The surveys are being laid together.' : 'Choose two surveys.'}
+              <p className={`text-ink3 ${draft.surveyIds.length > 1 ? 'min-h-screen' : ''}`}>
+                {draft.surveyIds.length > 1 ? 'The surveys are being laid together.' : 'Choose two surveys.'}
               </p>
             )}
           </section>

@@ -47,9 +47,12 @@ export function StarsScreen({ collaboration, initial, surveys }: StarsScreenProp
           {sentenceOf(error)}
         </Notice>
       )}
-      {isPart && error === undefined && (
-        <p className="mb-2 text-ink3 text-note" role="status">
-          {stars.length} of {total} stars are here; the others are on their way.
+      {initial.stars.length < total && (
+        // Its line stays, so that the table does not move when the last of them are here.
+        <p className="mb-2 min-h-5 text-ink3 text-note" role="status">
+          {isPart &&
+            error === undefined &&
+            `${stars.length} of ${total} stars are here; the others are on their way.`}
         </p>
       )}
       <StarTable collaboration={collaboration} stars={stars} surveys={surveys} />

@@ -49,7 +49,11 @@ export default async function LabLayout({
           .filter(({ needs }) => may(actor, needs, { isOwn: true }))
           .map(({ label, path }) => ({ label, path }))}
       />
-      <main id="main" className="mx-auto max-w-[1440px] px-[22px] lg:px-10">
+      {/* As high as the window: the foot of the page stays out of sight while its content comes. */}
+      <main
+        id="main"
+        className="mx-auto min-h-[calc(100dvh-7rem)] max-w-[1440px] px-[22px] lg:px-10 print:min-h-0"
+      >
         <FigureFrame
           collaboration={actor.collaboration}
           file={actor.collaboration}
