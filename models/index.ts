@@ -249,6 +249,9 @@ export async function closeDatabase(): Promise<void> {
   holder.rareboundDatabase = undefined;
 }
 
+/** Whether what is asked now belongs to the transaction of a whole request. */
+export const isInOneTransaction = (): boolean => wholeRequest().getStore() !== undefined;
+
 /** One transaction per use case; within `inOneTransaction` it is the one that is open. */
 export function inTransaction<T>(work: (transaction: Transaction) => Promise<T>): Promise<T> {
   const open = wholeRequest().getStore();

@@ -30,6 +30,7 @@ import { recordAudit } from './audit';
 import { listPopulations } from './populations';
 import { summariseRuns } from './runs';
 import { newRecipeDefaults } from './settings';
+import { together } from './together';
 
 const LONGEST_NAME = 120;
 
@@ -49,21 +50,28 @@ function stateOf(
   return isSame ? 'run' : 'changed';
 }
 
-async function describeAnalyses(actor: Actor, rows: AnalysisRow[]): Promise<AnalysisView[]> {
-  if (rows.length === 0) return [];
-  const { collaborationId } = actor;
+/** What hangs on analyses, read for all of them at once, whoever asks. */
+async function readBehind(collaborationId: string, rows: AnalysisRow[]) {
   const ids = rows.map(({ id }) => id);
   const parentIds = rows.flatMap(({ parentId }) => parentId ?? []);
   const makerIds = rows.flatMap(({ createdBy }) => createdBy ?? []);
-  const [{ populations }, surveys, parents, makers, runs, recipes] = await Promise.all([
-    listPopulations(actor),
+  const [surveys, parents, makers, runs, recipes] = await Promise.all([
     SurveyRow.findAll({ where: { collaborationId }, order: [['position', 'ASC']] }),
     AnalysisRow.findAll({ where: { id: parentIds } }),
     PersonRow.findAll({ where: { id: makerIds } }),
     summariseRuns(ids),
-    RunRow.findAll({ attributes: ['id', 'recipe'], where: { analysisId: ids } }),
+    RunRow.findAll({ attributes: ['id', 'recipe'], where: { analysisId: ids }, raw: true }),
   ]);
   const recipeOf = new Map(recipes.map((run) => [run.id, run.recipe]));
+  return { rows, surveys, parents, makers, runs, recipeOf };
+}
+
+type Behind = Awaited<ReturnType<typeof readBehind>>;
+
+async function describeAnalyses(actor: Actor, behind: Behind): Promise<AnalysisView[]> {
+  const { rows, surveys, parents, makers, runs, recipeOf } = behind;
+  if (rows.length === 0) return [];
+  const { populations } = await listPopulations(actor);
   return rows.map((row) => {
     const population = populations.find(({ id }) => id === row.recipe.populationId);
     if (!population) throw new NotFound('population');
@@ -97,19 +105,31 @@ async function describeAnalyses(actor: Actor, rows: AnalysisRow[]): Promise<Anal
   });
 }
 
+async function describeAnalysis(actor: Actor, row: AnalysisRow): Promise<AnalysisView> {
+  const [view] = await describeAnalyses(actor, await readBehind(actor.collaborationId, [row]));
+  return view;
+}
+
+async function readAllAnalyses(collaborationId: string): Promise<Behind> {
+  const rows = await AnalysisRow.findAll({
+    where: { collaborationId },
+    order: [['number', 'DESC']],
+  });
+  return readBehind(collaborationId, rows);
+}
+
 /** All analyses, the newest first. */
 export async function listAnalyses(actor: Actor): Promise<{ analyses: AnalysisView[] }> {
   demand(actor, 'read');
-  const rows = await AnalysisRow.findAll({
-    where: { collaborationId: actor.collaborationId },
-    order: [['number', 'DESC']],
-  });
-  return { analyses: await describeAnalyses(actor, rows) };
+  const { collaborationId } = actor;
+  const behind = await together(`analyses ${collaborationId}`, () =>
+    readAllAnalyses(collaborationId),
+  );
+  return { analyses: await describeAnalyses(actor, behind) };
 }
 
 export async function getAnalysis(actor: Actor, key: string): Promise<AnalysisView> {
-  const [view] = await describeAnalyses(actor, [await findAnalysis(actor, key)]);
-  return view;
+  return describeAnalysis(actor, await findAnalysis(actor, key));
 }
 
 /** Refuses a recipe that names what this collaboration does not have. */
@@ -211,8 +231,7 @@ export async function addAnalysisIn(
 
 async function addAnalysis(actor: Actor, fields: NewAnalysis): Promise<AnalysisView> {
   const row = await inTransaction((transaction) => addAnalysisIn(actor, fields, transaction));
-  const [view] = await describeAnalyses(actor, [row]);
-  return view;
+  return describeAnalysis(actor, row);
 }
 
 /** A new analysis; level and rule for shared stars follow the collaboration where it names none. */

@@ -14,6 +14,7 @@ import { leadOf } from './lead-analysis';
 import { describeSteps, type HistoryRun } from './limit-history';
 import { sharingNotices } from './sharing/notices';
 import { listSurveys } from './surveys';
+import { together } from './together';
 
 const LOG_LENGTH = 12;
 
@@ -138,27 +139,35 @@ function readLog(actor: Actor) {
   );
 }
 
+/** What stands on the page of every member alike. */
+async function readAlike(actor: Actor, lead: AnalysisView | null) {
+  const { collaborationId } = actor;
+  const [people, jobs, log, history, candidates] = await Promise.all([
+    MemberRow.count({ where: { collaborationId } }),
+    openJobs(collaborationId),
+    readLog(actor),
+    lead ? readHistory(lead.id) : [],
+    undecidedCandidates(actor, lead),
+  ]);
+  return { people, jobs, log, history, candidates };
+}
+
 /** Where a collaboration stands, and what waits for a person. */
 export async function getOverview(actor: Actor): Promise<Overview> {
   const { collaborationId, collaboration: slug } = actor;
-  const [row, people, surveys, { analyses }, jobs, log] = await Promise.all([
+  const [row, surveys, { analyses }, sharing] = await Promise.all([
     CollaborationRow.findByPk(collaborationId, { rejectOnEmpty: true }),
-    MemberRow.count({ where: { collaborationId } }),
     listSurveys(actor),
     listAnalyses(actor),
-    openJobs(collaborationId),
-    readLog(actor),
-  ]);
-  const lead = leadOf(analyses, row.settings);
-  const [history, candidates, sharing] = await Promise.all([
-    lead ? readHistory(lead.id) : [],
-    undecidedCandidates(actor, lead),
     sharingNotices(actor),
   ]);
+  const lead = leadOf(analyses, row.settings);
+  const key = `overview ${collaborationId} ${lead?.id} ${lead?.updatedAt}`;
+  const { history, candidates, log, ...facts } = await together(key, () => readAlike(actor, lead));
   return {
+    ...facts,
     name: row.name,
     slug,
-    people,
     surveys,
     lead: lead?.key ?? null,
     analyses,
@@ -169,7 +178,6 @@ export async function getOverview(actor: Actor): Promise<Overview> {
       ...candidates,
       ...sharing,
     ],
-    jobs,
     log: log.map(({ at, who, what }) => ({ at: at.toISOString(), who, what })),
     can: {
       invite: may(actor, 'invite'),

@@ -22,6 +22,7 @@ import {
 import { database, inTransaction, PopulationRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import { recordAudit } from './audit';
+import { together } from './together';
 
 const KEY = /^P-([1-9][0-9]{0,8})$/;
 
@@ -151,7 +152,9 @@ async function readPopulations<Row extends Listed>(
 /** Every version in the collaboration, newest population and version first. */
 export async function listPopulations(actor: Actor): Promise<{ populations: ListedPopulation[] }> {
   demand(actor, 'read');
-  const rows = await readPopulations<Listed>(actor, LISTED_DEFINITION, {});
+  const rows = await together(`populations ${actor.collaborationId}`, () =>
+    readPopulations<Listed>(actor, LISTED_DEFINITION, {}),
+  );
   return { populations: rows.map((row) => toListed(actor, row)) };
 }
 

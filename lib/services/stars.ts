@@ -21,6 +21,7 @@ import {
 import { matchesOf } from './star-overlaps';
 import { currentYardstick, gridOfSettings, summariseMaps } from './survey-depth';
 import { companionView } from './targets';
+import { together } from './together';
 
 const foldedNames = (star: ListedStar, entries: EntryRow[]) =>
   [star.name, ...entries.flatMap(({ name, otherNames }) => [name, ...otherNames])].map(foldName);
@@ -124,17 +125,22 @@ function isAsked(star: ListedStar, sky: Sky, { q, survey, only }: StarQuery): bo
   return true;
 }
 
+type StarsAsked = StarQuery & Pick<PageAsked, 'after'>;
+
 /** Stars by name, each once, with what every survey says of it. */
-export async function listStars(
-  actor: Actor,
-  query: StarQuery & Pick<PageAsked, 'after'>,
-): Promise<StarList> {
+export async function listStars(actor: Actor, query: StarsAsked): Promise<StarList> {
   demand(actor, 'read');
-  const sky = await loadSky(actor.collaborationId);
+  const { collaborationId } = actor;
+  const asked = JSON.stringify(query);
+  return together(`stars ${collaborationId} ${asked}`, () => readStars(collaborationId, query));
+}
+
+async function readStars(collaborationId: string, query: StarsAsked): Promise<StarList> {
+  const sky = await loadSky(collaborationId);
   const asked = sky.stars.filter((star) => isAsked(star, sky, query));
   const page = pageOf(asked, query, ({ id }) => id);
   const shown = page.flatMap(({ id }) => sky.entriesOf.get(id) ?? []);
-  const probabilities = await probabilitiesOf(actor.collaborationId, shown);
+  const probabilities = await probabilitiesOf(collaborationId, shown);
   const conflicts = sky.stars.map((star) => openConflicts(star, sky));
   const entries = [...sky.entriesOf.values()];
   return {

@@ -16,6 +16,7 @@ import { recordAudit } from './audit';
 import { describeShared, refuseShared } from './sharing/shared-surveys';
 import { gridOfSettings, summariseMaps, type Yardstick } from './survey-depth';
 import { readSurveyFacts, type SurveyFacts } from './survey-facts';
+import { together } from './together';
 
 /** A survey's short name for addresses: "Halyard II" → "halyard-ii". */
 export function slugOf(name: string): string {
@@ -57,8 +58,15 @@ async function countOverlaps(collaborationId: string) {
   };
 }
 
-async function sensitivityOf(row: SurveyRow, ids: string[], yardstick: Yardstick) {
-  if (ids.length === 0) return { depth: null, summedCompleteness: null };
+type Sensitivity = Pick<SurveyView, 'depth' | 'summedCompleteness'>;
+const NOTHING_SEEN: Sensitivity = { depth: null, summedCompleteness: null };
+
+async function sensitivityOf(
+  row: SurveyRow,
+  ids: string[],
+  yardstick: Yardstick,
+): Promise<Sensitivity> {
+  if (ids.length === 0) return NOTHING_SEEN;
   const grid = gridOfSettings(row.mapSettings as MapSettings);
   const summaries = await summariseMaps(row.collaborationId, ids, yardstick, grid);
   const stars = new Float64Array(grid.semiMajorAxisAu.length);
@@ -77,18 +85,30 @@ async function sensitivityOf(row: SurveyRow, ids: string[], yardstick: Yardstick
   };
 }
 
+type SeenFacts = SurveyFacts & { sensitivityOf: Map<string, Sensitivity> };
+
+/** What hangs on surveys, and what their maps see. */
+async function readFacts(collaborationId: string, rows: SurveyRow[]): Promise<SeenFacts> {
+  const facts = await readSurveyFacts(collaborationId, rows);
+  const seen = await Promise.all(
+    rows.map(async (row): Promise<[string, Sensitivity]> => {
+      const ids = facts.countsOf.get(row.id)?.mapIds ?? [];
+      return [row.id, await sensitivityOf(row, ids, facts.yardstick)];
+    }),
+  );
+  return { ...facts, sensitivityOf: new Map(seen) };
+}
+
 async function describeSurvey(
   actor: Actor,
   row: SurveyRow,
-  facts: SurveyFacts,
+  facts: SeenFacts,
   look = { forNewer: false },
 ): Promise<SurveyView> {
   const counts = facts.countsOf.get(row.id);
   const share = row.shareId === null ? undefined : facts.shareOf.get(row.shareId);
-  const [sensitivity, shared] = await Promise.all([
-    sensitivityOf(row, counts?.mapIds ?? [], facts.yardstick),
-    share && describeShared(actor, share, look),
-  ]);
+  const sensitivity = facts.sensitivityOf.get(row.id) ?? NOTHING_SEEN;
+  const shared = share && (await describeShared(actor, share, look));
   const lead = row.leadId === null ? undefined : facts.leadOf.get(row.leadId);
   const item = { isLead: isLead(actor, row) };
   const isOwn = row.shareId === null;
@@ -132,27 +152,35 @@ async function describeSurvey(
   };
 }
 
-/** Surveys of the collaboration, archived ones last, with the stars that they share. */
-export async function listSurveys(actor: Actor): Promise<SurveyList> {
-  demand(actor, 'read');
+async function readAllSurveys(collaborationId: string) {
   const rows = await SurveyRow.findAll({
-    where: { collaborationId: actor.collaborationId },
+    where: { collaborationId },
     order: [
       [database().literal('archived_at <= now() is true') as never, 'ASC'],
       ['position', 'ASC'],
     ],
   });
   const [facts, overlaps] = await Promise.all([
-    readSurveyFacts(actor.collaborationId, rows),
-    countOverlaps(actor.collaborationId),
+    readFacts(collaborationId, rows),
+    countOverlaps(collaborationId),
   ]);
+  return { rows, facts, overlaps };
+}
+
+/** Surveys of the collaboration, archived ones last, with the stars that they share. */
+export async function listSurveys(actor: Actor): Promise<SurveyList> {
+  demand(actor, 'read');
+  const { collaborationId } = actor;
+  const { rows, facts, overlaps } = await together(`surveys ${collaborationId}`, () =>
+    readAllSurveys(collaborationId),
+  );
   const surveys = await Promise.all(rows.map((row) => describeSurvey(actor, row, facts)));
   return { surveys, ...overlaps };
 }
 
 export async function getSurvey(actor: Actor, slug: string): Promise<SurveyView> {
   const row = await findSurvey(actor, slug);
-  const facts = await readSurveyFacts(actor.collaborationId, [row]);
+  const facts = await readFacts(actor.collaborationId, [row]);
   return describeSurvey(actor, row, facts, { forNewer: true });
 }
 

@@ -16,6 +16,7 @@ import {
 import { type PageAsked, pageOf } from '../behind-row';
 import { notWithdrawn } from '../sharing/archived';
 import { findSurvey } from '../surveys';
+import { together } from '../together';
 import { describeCandidate } from './describe';
 import { openProposals } from './detail';
 import { type LeadRanges, leadRanges } from './lead-ranges';
@@ -72,12 +73,17 @@ const inOrder = (all: Loaded[], ranges: LeadRanges) =>
     .sort((a, b) => a.rank - b.rank)
     .map(({ one }) => one);
 
+type CandidatesAsked = CandidateQuery & Pick<PageAsked, 'after'>;
+
 /** Candidates of all surveys, those that wait for a person first. */
-export async function listCandidates(
-  actor: Actor,
-  query: CandidateQuery & Pick<PageAsked, 'after'>,
-): Promise<CandidateList> {
+export async function listCandidates(actor: Actor, query: CandidatesAsked): Promise<CandidateList> {
   demand(actor, 'read');
+  const key = `candidates ${actor.collaborationId} ${JSON.stringify(query)}`;
+  return together(key, () => readCandidates(actor, query));
+}
+
+/** The same for every member. */
+async function readCandidates(actor: Actor, query: CandidatesAsked): Promise<CandidateList> {
   const [all, ranges] = await Promise.all([readAll(actor, query), leadRanges(actor)]);
   const { status } = query;
   const asked = all.filter(({ row }) => status === undefined || row.status === status);
