@@ -156,7 +156,9 @@ async function readAlike(actor: Actor, lead: AnalysisView | null) {
 export async function getOverview(actor: Actor): Promise<Overview> {
   const { collaborationId, collaboration: slug } = actor;
   const [row, surveys, { analyses }, sharing] = await Promise.all([
-    CollaborationRow.findByPk(collaborationId, { rejectOnEmpty: true }),
+    together(`collaboration ${collaborationId}`, () =>
+      CollaborationRow.findByPk(collaborationId, { rejectOnEmpty: true }),
+    ),
     listSurveys(actor),
     listAnalyses(actor),
     sharingNotices(actor),

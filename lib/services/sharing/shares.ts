@@ -6,6 +6,7 @@ import { select } from '@/lib/queue/statement';
 import { idSchema } from '@/lib/schemas/common';
 import type { ShareState, Shares, ShareView } from '@/lib/schemas/sharing';
 import { CollaborationRow, PersonRow, ShareRow, SurveyRow } from '@/models';
+import { together } from '../together';
 
 /** Where an offer stands now. */
 export function stateOf(share: ShareRow): ShareState {
@@ -31,15 +32,15 @@ async function countSources(shares: ShareRow[]) {
   return new Map(rows.map(({ id, ...holds }) => [id, holds]));
 }
 
-async function describeShares(actor: Actor, shares: ShareRow[]): Promise<ShareView[]> {
-  if (shares.length === 0) return [];
+/** What hangs on offers, whoever asks. */
+async function readBehind(collaborationId: string, shares: ShareRow[]) {
   const people = shares.flatMap(({ offeredBy, decidedBy }) => [offeredBy, decidedBy]);
   const [receivers, persons, surveys, sources] = await Promise.all([
     CollaborationRow.findAll({ where: { id: shares.map(({ receiverId }) => receiverId) } }),
     PersonRow.findAll({ where: { id: people.filter((id) => id !== null) } }),
     SurveyRow.findAll({
       where: {
-        collaborationId: actor.collaborationId,
+        collaborationId,
         [Op.or]: [
           { shareId: shares.map(({ id }) => id) },
           { id: shares.flatMap(({ surveyId }) => surveyId ?? []) },
@@ -49,6 +50,12 @@ async function describeShares(actor: Actor, shares: ShareRow[]): Promise<ShareVi
     countSources(shares),
   ]);
   const nameOf = new Map([...receivers, ...persons].map(({ id, name }) => [id, name]));
+  return { shares, nameOf, surveys, sources };
+}
+
+type Behind = Awaited<ReturnType<typeof readBehind>>;
+
+function describeShares(actor: Actor, { shares, nameOf, surveys, sources }: Behind): ShareView[] {
   const personName = (id: string | null) => nameOf.get(id ?? '') ?? null;
   return shares.map((share) => {
     const isGiven = share.collaborationId === actor.collaborationId;
@@ -92,7 +99,7 @@ async function describeShares(actor: Actor, shares: ShareRow[]): Promise<ShareVi
 
 export async function describeShare(actor: Actor, id: string): Promise<ShareView> {
   const share = await ShareRow.findByPk(id, { rejectOnEmpty: true });
-  return (await describeShares(actor, [share]))[0];
+  return describeShares(actor, await readBehind(actor.collaborationId, [share]))[0];
 }
 
 /** An offer from or to this collaboration, or the same "no such offer" for absent and foreign. */
@@ -111,10 +118,7 @@ export async function findShare(
   return row;
 }
 
-/** The code by which others find this collaboration, and every offer from and to it, newest first. */
-export async function listShares(actor: Actor): Promise<Shares> {
-  demand(actor, 'read');
-  const { collaborationId } = actor;
+async function readShares(collaborationId: string) {
   const [[{ code }], rows] = await Promise.all([
     select<{ code: string }>('select sharing_code as code from collaboration where id = $1', [
       collaborationId,
@@ -127,5 +131,15 @@ export async function listShares(actor: Actor): Promise<Shares> {
       ],
     }),
   ]);
-  return { code, shares: await describeShares(actor, rows) };
+  return { code, behind: await readBehind(collaborationId, rows) };
+}
+
+/** The code by which others find this collaboration, and every offer from and to it, newest first. */
+export async function listShares(actor: Actor): Promise<Shares> {
+  demand(actor, 'read');
+  const { collaborationId } = actor;
+  const { code, behind } = await together(`shares ${collaborationId}`, () =>
+    readShares(collaborationId),
+  );
+  return { code, shares: describeShares(actor, behind) };
 }
