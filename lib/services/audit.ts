@@ -12,6 +12,7 @@ import {
 import { AuditEntryRow, database, inTransaction } from '@/models';
 import { behindRow, type PageAsked } from './behind-row';
 import { nameItems } from './item-names';
+import { together } from './together';
 
 /** Whom an entry is about: a member within a collaboration, or a person outside of any. */
 export type AuditActor = {
@@ -118,12 +119,17 @@ async function readEntries(
   });
 }
 
+type AuditAsked = AuditQuery & Pick<PageAsked, 'after'>;
+
 /** Entries of the collaboration, newest first. */
-export async function listAudit(
-  actor: Actor,
-  query: AuditQuery & Pick<PageAsked, 'after'>,
-): Promise<AuditPage> {
+export async function listAudit(actor: Actor, query: AuditAsked): Promise<AuditPage> {
   demand(actor, 'read-audit');
+  const key = `audit ${actor.collaborationId} ${JSON.stringify(query)}`;
+  return together(key, () => readPage(actor, query));
+}
+
+/** The same for everybody who may read it. */
+async function readPage(actor: Actor, query: AuditAsked): Promise<AuditPage> {
   const [counted] = await database().query<{ total: number }>(
     `select count(*)::int as total from audit_entry a where ${CONDITIONS}`,
     { bind: bindOf(actor, query), type: QueryTypes.SELECT },

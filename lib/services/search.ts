@@ -4,6 +4,7 @@ import { demand } from '@/lib/access/permissions';
 import { foldName } from '@/lib/formats';
 import { MOST_OF_A_KIND, type SearchHit } from '@/lib/schemas/search';
 import { database } from '@/models';
+import { together } from './together';
 
 /** In a pattern the three signs stand for themselves. */
 const literal = (text: string) => text.replace(/[\\%_]/g, (sign) => `\\${sign}`);
@@ -89,9 +90,11 @@ export async function search(actor: Actor, words: string): Promise<{ hits: Searc
     (query) => `(select kind, id, title, note, page, distance
        from (${query}) found order by distance, length(title), title limit $2)`,
   );
-  const rows = await database().query<SearchHit & { distance: number }>(
-    `${parts.join(' union all ')} order by distance`,
-    { bind, type: QueryTypes.SELECT },
+  const rows = await together(`search ${actor.collaborationId} ${folded}`, () =>
+    database().query<SearchHit & { distance: number }>(
+      `${parts.join(' union all ')} order by distance`,
+      { bind, type: QueryTypes.SELECT },
+    ),
   );
   return { hits: rows.map(({ kind, id, title, note, page }) => ({ kind, id, title, note, page })) };
 }

@@ -15,6 +15,7 @@ import { describeJobs } from './jobs';
 import { findRun } from './runs';
 import { refuseUnanswerable } from './study-checks';
 import { studyNames } from './study-words';
+import { together } from './together';
 
 /** Further questions that one person may have waiting or running. */
 const MOST_QUEUED = 20;
@@ -91,12 +92,22 @@ const NEWEST = {
   direction: 'down',
 } as const;
 
+type StudiesAsked = StudyQuery & PageAsked;
+
 export async function listStudies(
   actor: Actor,
-  { kind, limit, offset, after }: StudyQuery & PageAsked,
+  query: StudiesAsked,
 ): Promise<{ studies: StudySummary[] }> {
   demand(actor, 'read');
   const { collaborationId } = actor;
+  const asked = JSON.stringify(query);
+  return together(`studies ${collaborationId} ${asked}`, () => readStudies(collaborationId, query));
+}
+
+async function readStudies(
+  collaborationId: string,
+  { kind, limit, offset, after }: StudiesAsked,
+): Promise<{ studies: StudySummary[] }> {
   const where: WhereOptions = {
     collaborationId,
     ...(kind && { kind }),

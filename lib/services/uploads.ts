@@ -15,6 +15,7 @@ import { loadParts } from './incoming-file';
 import { noteChanges, takeStanding } from './intake/changes';
 import type { KeptFile } from './reading';
 import { findSurvey, isLead } from './surveys';
+import { together } from './together';
 
 interface Beside {
   id: string;
@@ -107,9 +108,19 @@ const NEWEST = {
 export async function listUploads(
   actor: Actor,
   slug: string | undefined,
-  { limit, offset, after }: PageAsked,
+  page: PageAsked,
 ): Promise<UploadView[]> {
   demand(actor, 'read');
+  const key = `uploads ${actor.collaborationId} ${JSON.stringify([slug, page])}`;
+  return together(key, () => readUploads(actor, slug, page));
+}
+
+/** The same for every member. */
+async function readUploads(
+  actor: Actor,
+  slug: string | undefined,
+  { limit, offset, after }: PageAsked,
+): Promise<UploadView[]> {
   const { collaborationId } = actor;
   const survey = slug === undefined ? null : await findSurvey(actor, slug);
   const rows = await UploadRow.findAll({
