@@ -26,7 +26,8 @@ export function Entrance({ theme, children }: { theme: Theme; children: ReactNod
         </div>
         <main
           id="main"
-          className="flex w-full max-w-[400px] flex-1 flex-col justify-center py-10 [&_button[type=submit]]:h-11 [&_input]:h-11"
+          // From the top, not in the middle: what comes line by line would move all that is there.
+          className="flex w-full max-w-[400px] flex-1 flex-col pt-[max(2.5rem,15dvh)] pb-10 [&_button[type=submit]]:h-11 [&_input]:h-11"
         >
           {children}
         </main>
