@@ -159,7 +159,9 @@ export function CombineScreen({
             ) : (
               // What follows stays out of sight, so that nothing jumps once the counts are there.
               <p className={`text-ink3 ${draft.surveyIds.length > 1 ? 'min-h-screen' : ''}`}>
-                {draft.surveyIds.length > 1 ? 'The surveys are being laid together.' : 'Choose two surveys.'}
+                {draft.surveyIds.length > 1
+                  ? 'The surveys are being laid together.'
+                  : 'Choose two surveys.'}
               </p>
             )}
           </section>

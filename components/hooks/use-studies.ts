@@ -2,7 +2,7 @@
 
 import useSWR from 'swr';
 import type { JobView } from '@/lib/schemas/jobs';
-import type { StudySummary } from '@/lib/schemas/studies';
+import type { StudySummary, StudyView } from '@/lib/schemas/studies';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
@@ -28,18 +28,26 @@ export function useRunStudies(collaboration: string, runId: string | undefined) 
 }
 
 /** Questions of one kind asked in the collaboration, newest first. */
-export function useStudiesOfKind(collaboration: string, kind: StudyKind) {
+export function useStudiesOfKind(
+  collaboration: string,
+  kind: StudyKind,
+  fallback?: StudySummary[],
+) {
   return useSWR(withQuery(apiPath(collaboration, 'studies'), { kind }), fetchStudies, {
+    fallbackData: fallback,
     refreshInterval: pollWhileOpen,
   });
 }
 
 /** One question with its answer, which never changes once it is there. */
-export function useStudy(collaboration: string, id: string | undefined) {
+export function useStudy(collaboration: string, id: string | undefined, first?: StudyView) {
+  const fallback = first?.id === id ? first : undefined;
   return useSWR(
     id === undefined ? null : apiPath(collaboration, 'studies', id),
     (path) => request(path, answer('studySchema')),
     {
+      fallbackData: fallback,
+      revalidateIfStale: fallback?.job.status !== 'done',
       refreshInterval: (study) => (study && isOpen(study.job) ? POLL_MS : 0),
       revalidateOnFocus: false,
     },

@@ -14,7 +14,7 @@ import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
-import type { StudySummary } from '@/lib/schemas/studies';
+import type { StudySummary, StudyView } from '@/lib/schemas/studies';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
 import { AnswerExports } from './answer-exports';
 import { answerFigures } from './answer-files';
@@ -34,6 +34,8 @@ export interface StudyPageProps<Kind extends StudyKind> {
   runPopulation: ListedPopulation | null;
   /** The answer that the address names. */
   answerId?: string;
+  /** What was asked of this kind, and the answer that is shown first. */
+  first: { studies: StudySummary[]; study?: StudyView };
 }
 
 const cannotAsk =
@@ -41,16 +43,16 @@ const cannotAsk =
 
 /** One kind of further question: its settings, its job, its answers and what they rest on. */
 export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
-  const { kind, collaboration, analysis, run, runPopulation } = props;
+  const { kind, collaboration, analysis, run, runPopulation, first } = props;
   const entry = kinds[kind];
   const [chosenId, setChosenId] = useState(props.answerId);
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
-  const { data: all, error, mutate } = useStudiesOfKind(collaboration, kind);
+  const { data: all, error, mutate } = useStudiesOfKind(collaboration, kind, first.studies);
   const studies = all?.filter((study) => study.run.analysisKey === analysis.key);
   const open = studies?.filter(({ job }) => job.status === 'waiting' || job.status === 'running');
   const shownId = chosenId ?? studies?.find(({ job }) => job.status === 'done')?.id;
-  const { data: study, error: studyError } = useStudy(collaboration, shownId);
+  const { data: study, error: studyError } = useStudy(collaboration, shownId, first.study);
   const answered = useAnsweredRun({ collaboration, analysis, run, runPopulation, study });
   useAddressQuery(chosenId === undefined ? {} : { answer: chosenId });
 

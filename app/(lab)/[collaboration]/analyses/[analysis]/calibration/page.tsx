@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import { StudyPage } from '@/components/studies/study-page';
-import { studyInputs } from '../studies/study-inputs';
+import { answeredInputs } from '../studies/study-inputs';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string }>;
@@ -14,6 +14,6 @@ export async function generateMetadata({ params }: PageProps): Promise<Metadata>
 export default async function CalibrationPage({ params, searchParams }: PageProps) {
   const { collaboration, analysis } = await params;
   const { answer } = await searchParams;
-  const inputs = await studyInputs(collaboration, analysis);
+  const inputs = await answeredInputs(collaboration, analysis, 'calibration', answer);
   return <StudyPage key={analysis} kind="calibration" answerId={answer} {...inputs} />;
 }

@@ -2,7 +2,7 @@ import type { Metadata } from 'next';
 import { notFound, redirect } from 'next/navigation';
 import { isStudyKind, kindWords, questionAddress } from '@/components/studies/kind-words';
 import { StudyPage } from '@/components/studies/study-page';
-import { studyInputs } from '../study-inputs';
+import { answeredInputs } from '../study-inputs';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string; kind: string }>;
@@ -21,6 +21,6 @@ export default async function FurtherQuestionPage({ params, searchParams }: Page
   // Some kinds have a page of their own.
   const place = questionAddress(collaboration, analysis, kind, answer);
   if (!place.includes('/studies/')) redirect(place);
-  const inputs = await studyInputs(collaboration, analysis);
+  const inputs = await answeredInputs(collaboration, analysis, kind, answer);
   return <StudyPage key={`${analysis} ${kind}`} kind={kind} answerId={answer} {...inputs} />;
 }
