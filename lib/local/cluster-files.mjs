@@ -40,6 +40,18 @@ export function newestBinaries() {
   return versions.length === 0 ? null : path.join(versionsFolder, versions[0], 'bin');
 }
 
+/**
+ * The newest PostgreSQL programs, installed where there are none.
+ *
+ * @returns {Promise<string>} their folder
+ */
+export async function ensureBinaries() {
+  if (newestBinaries() === null) await installDebianPackage('postgresql', 'to keep the data');
+  const binaries = newestBinaries();
+  if (binaries === null) throw new LauncherProblem(`No PostgreSQL server in ${versionsFolder}.`);
+  return binaries;
+}
+
 /** The programs of the version that made the files, else the newest. */
 async function findBinaries(/** @type {string} */ data) {
   const versionFile = path.join(data, 'PG_VERSION');
@@ -51,10 +63,7 @@ async function findBinaries(/** @type {string} */ data) {
       `The database in ${data} was made by PostgreSQL ${version}, which is not installed.`,
     );
   }
-  if (newestBinaries() === null) await installDebianPackage('postgresql', 'to keep the data');
-  const binaries = newestBinaries();
-  if (binaries === null) throw new LauncherProblem(`No PostgreSQL server in ${versionsFolder}.`);
-  return binaries;
+  return ensureBinaries();
 }
 
 /** Root may not run the server: Debian's postgres account does. */
@@ -93,7 +102,7 @@ async function choosePlace(home, owner, id) {
 export async function openCluster(name, { durable }) {
   const home = path.join(dataFolder(), name);
   mkdirSync(home, { recursive: true });
-  if (newestBinaries() === null) await installDebianPackage('postgresql', 'to keep the data');
+  await ensureBinaries();
   const owner = findOwner();
   const connectionFile = path.join(home, 'connection.json');
   const known = readConnection(connectionFile);

@@ -1,5 +1,5 @@
 import path from 'node:path';
-import { openCluster } from './cluster-files.mjs';
+import { ensureBinaries, openCluster } from './cluster-files.mjs';
 import {
   databaseAddress,
   ensureRoleAndDatabase,
@@ -16,10 +16,12 @@ import { dataFolder } from './environment.mjs';
  * @returns {Promise<{ databaseUrl: string, binaries: string, close: () => Promise<void> }>}
  */
 export async function databaseTools() {
+  const given = process.env.DATABASE_URL;
+  if (given) {
+    return { databaseUrl: given, binaries: await ensureBinaries(), close: async () => {} };
+  }
   const cluster = await openCluster('postgres', { durable: true });
   const { binaries } = cluster;
-  const given = process.env.DATABASE_URL;
-  if (given) return { databaseUrl: given, binaries, close: async () => {} };
   const wasRunning = findServer(cluster) !== null;
   if (!wasRunning) {
     const logFile = path.join(dataFolder(), 'postgres', 'server.log');

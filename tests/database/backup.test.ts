@@ -1,9 +1,10 @@
-import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import os from 'node:os';
 import path from 'node:path';
-import { afterAll, beforeAll, expect, it } from 'vitest';
+import { afterAll, beforeAll, expect, it, vi } from 'vitest';
 import { newestBinaries } from '@/lib/local/cluster-files.mjs';
 import { backUp, manifestOf, restore } from '@/lib/local/database-copy.mjs';
+import { databaseTools } from '@/lib/local/database-tools.mjs';
 import { withDatabase } from '../support/database';
 import { createCollaborationWith } from '../support/people';
 import { buildSurvey, buildTarget } from '../support/sample';
@@ -69,4 +70,12 @@ it.each([
   const before = await targets();
   await expect(restore({ ...tools, file: damaged })).rejects.toThrow(/damaged.*SHA-256/);
   expect(await targets()).toEqual(before);
+});
+
+it('a database of the environment is copied without one being made on this machine', async () => {
+  const data = path.join(folder, 'data');
+  vi.stubEnv('RAREBOUND_DATA_DIR', data);
+  vi.stubEnv('DATABASE_URL', url);
+  expect(await databaseTools()).toMatchObject(tools);
+  expect(existsSync(path.join(data, 'postgres'))).toBe(false);
 });
