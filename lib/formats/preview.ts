@@ -3,7 +3,7 @@ import type { CurveRecord, MapRecord, Preview, PreviewCell, ReadContext } from '
 import { readNumberText, readTypedNumber } from './numbers';
 import type { RawCell, RawTable } from './table';
 
-const shown = { rows: 8, curves: 5, points: 200, maps: 3, nodes: 40 };
+const shown = { rows: 8, characters: 120, curves: 5, points: 200, maps: 3, nodes: 40 };
 
 /** A table with the columns that were found in it. */
 export interface BoundTable {
@@ -49,9 +49,15 @@ function previewTable({ table, columns }: BoundTable): NonNullable<Preview['tabl
   };
 }
 
+/** Of a long remark its beginning. */
+const beginningOf = (text: string) =>
+  text.length <= shown.characters
+    ? text
+    : `${[...text.slice(0, shown.characters)].slice(0, -1).join('')}…`;
+
 function readCell(cell: RawCell, { unit, toOurUnit }: BoundColumn): PreviewCell {
   if (cell === null || cell === '') return null;
-  if (unit === null) return String(cell);
+  if (unit === null) return beginningOf(String(cell));
   const reading =
     typeof cell === 'string' || typeof cell === 'boolean'
       ? readNumberText(String(cell), unit)

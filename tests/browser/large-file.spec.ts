@@ -31,5 +31,6 @@ test('a large file goes on where the connection broke', async ({ page }) => {
   const article = page.getByRole('article', { name: 'long.csv' });
   await expect(article.getByText('ready to store')).toBeVisible({ timeout: 60_000 });
   expect(offsets).toEqual(['0', String(PART_BYTES), String(PART_BYTES)]);
-  await expect(article).toContainText('190 new targets');
+  await expect(article).toContainText('190 targets: 190 new');
+  await expect(article.getByText(/^A long note.{1,120}…$/).first()).toBeVisible();
 });

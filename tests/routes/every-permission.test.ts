@@ -36,7 +36,9 @@ function isAllowed(person: Person, { action, whose }: RoutePermission): boolean 
 /** Changes nothing, or what only a later decision makes true: a file that is read, pairs proposed. */
 const isUnlogged = ({ name, route }: LabRoute) =>
   route.method === 'get' ||
-  /preview|figures|seen$|unfinished-files|patch .uploads|post .(uploads|stars.overlaps)$/.test(name);
+  /preview|figures|seen$|unfinished-files|patch .uploads|post .(uploads|stars.overlaps)$/.test(
+    name,
+  );
 
 async function countEntries({ collaboration }: WholeLab): Promise<number> {
   const [row] = await query<{ count: number }>(

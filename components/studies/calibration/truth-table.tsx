@@ -13,10 +13,12 @@ export function TruthTable({
   return (
     <Table caption="How often the limit held at fixed truths">
       <TableHead>
-        <HeadCell>{rateName}</HeadCell>
-        <HeadCell isNumeric>held in</HeadCell>
-        <HeadCell isNumeric>standard error</HeadCell>
-        <HeadCell isNumeric>theory</HeadCell>
+        <tr>
+          <HeadCell>{rateName}</HeadCell>
+          <HeadCell isNumeric>held in</HeadCell>
+          <HeadCell isNumeric>standard error</HeadCell>
+          <HeadCell isNumeric>theory</HeadCell>
+        </tr>
       </TableHead>
       <TableBody>
         {rows.map(({ rate, exact, observed, standardError }) => (
