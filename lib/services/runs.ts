@@ -29,8 +29,12 @@ const SEED_LENGTH = 16;
 
 /** Runs of analyses, newest first, each with the numbers that lists show. */
 export async function summariseRuns(analysisIds: string[]): Promise<Map<string, RunSummary[]>> {
-  const facts = await readRunFacts(analysisIds);
-  const jobs = await JobRow.findAll({ where: { id: facts.map(({ jobId }) => jobId) } });
+  const before = await readRunFacts(analysisIds);
+  const jobs = await JobRow.findAll({ where: { id: before.map(({ jobId }) => jobId) } });
+  const done = new Set(jobs.filter(({ status }) => status === 'done').map(({ id }) => id));
+  // One that ended between the two questions would be done without a result, and stay so on screen.
+  const hasEnded = before.some(({ jobId, finishedAt }) => finishedAt === null && done.has(jobId));
+  const facts = hasEnded ? await readRunFacts(analysisIds) : before;
   const views = new Map((await describeJobs(jobs)).map((view) => [view.id, view]));
   const summaries = new Map<string, RunSummary[]>(analysisIds.map((id) => [id, []]));
   for (const { analysisId, jobId, ...fact } of facts) {
