@@ -30,6 +30,10 @@ export class ApiProblem extends Error {
   }
 }
 
+/** Where the connection ended before an answer came. */
+export const noAnswer = (detail: string) =>
+  new ApiProblem({ type: 'about:blank', title: 'No answer', status: 0, code: 'no-answer', detail });
+
 /** The problem document of a refused answer; a body of another kind still gives a sentence. */
 export async function readProblem(response: Response): Promise<ApiProblem> {
   const body: unknown = await response.json().catch(() => null);

@@ -1,21 +1,16 @@
 import { DetailedError, Upload } from 'tus-js-client';
 import type { UploadKindName } from '@/lib/schemas/uploads';
 import { apiPath, withQuery } from './api-path';
-import { ApiProblem, readProblem } from './api-problem';
+import { noAnswer, readProblem } from './api-problem';
 
 const PART_BYTES = 8 * 2 ** 20;
 /** After a lost connection: about two minutes in all. */
 const AGAIN_AFTER_MS = [0, 1000, 3000, 5000, 10_000, 20_000, 40_000, 40_000];
 
 const stopped = () =>
-  new ApiProblem({
-    type: 'about:blank',
-    title: 'No answer',
-    status: 0,
-    code: 'no-answer',
-    detail:
-      'The connection was lost for too long. What has come is kept for a day: choose the same file again, and it goes on from there.',
-  });
+  noAnswer(
+    'The connection was lost for too long. What has come is kept for a day: choose the same file again, and it goes on from there.',
+  );
 
 async function problemOf(error: unknown): Promise<unknown> {
   if (!(error instanceof DetailedError)) return error;

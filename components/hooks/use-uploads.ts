@@ -9,7 +9,7 @@ import type {
 } from '@/lib/schemas/uploads';
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
-import { ApiProblem, readProblem } from './api-problem';
+import { noAnswer, readProblem } from './api-problem';
 import { change } from './change';
 import { request, requestNothing } from './request';
 
@@ -32,14 +32,9 @@ async function digestOf(file: File): Promise<string | null> {
 }
 
 const broken = () =>
-  new ApiProblem({
-    type: 'about:blank',
-    title: 'No answer',
-    status: 0,
-    code: 'no-answer',
-    detail:
-      'The connection ended before the file was there. Nothing is stored; send it again, and it takes the place of this attempt.',
-  });
+  noAnswer(
+    'The connection ended before the file was there. Nothing is stored; send it again, and it takes the place of this attempt.',
+  );
 
 /** By XMLHttpRequest, which alone tells how much of a body has gone. */
 function post(
