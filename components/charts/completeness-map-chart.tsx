@@ -1,6 +1,6 @@
 'use client';
 
-import { useId, useMemo, useState } from 'react';
+import { memo, useId, useMemo, useState } from 'react';
 import { formatPercent, formatPlain, formatRange } from '@/lib/quantities/display';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
@@ -8,7 +8,7 @@ import { tableOfField } from './data-table';
 import { DetectionMarks, type MapDetection } from './detection-marks';
 import type { Box, MapData } from './map-contours';
 import { MapAxes, mapFrame } from './map-frame';
-import { ContourNumbers, contourLabels, MapBands } from './map-layers';
+import { ContourNumbers, contourLabels, contoursOf, MapBands } from './map-layers';
 import { type MapRange, mapEnds, RangeHandles } from './range-box';
 import { CursorRing } from './reading-marks';
 import { useWidth } from './use-width';
@@ -30,7 +30,9 @@ const none: MapDetection[] = [];
 export const mapMargin: Box = { left: 46, right: 16, top: 8, bottom: 46 };
 
 /** Probability of detection in bands of 5 %, with contours, the range in question and detections. */
-export function CompletenessMapChart(props: CompletenessMapChartProps) {
+export const CompletenessMapChart = memo(function CompletenessMapChart(
+  props: CompletenessMapChartProps,
+) {
   const { map, subject, range, onRangeChange, detections = none, height } = props;
   const [measure, width] = useWidth<HTMLDivElement>(760);
   const [at, setAt] = useState<ReadPlace>();
@@ -43,12 +45,13 @@ export function CompletenessMapChart(props: CompletenessMapChartProps) {
   );
   const box = range ? rangePx(range, frame) : undefined;
   const marks = box && onRangeChange ? handleBoxes(box) : [];
+  const contours = useMemo(() => contoursOf(map, frame), [map, frame]);
   const numbers = useMemo(() => {
     const dots = detections.map(({ semiMajorAxisAu, massMjup }) =>
       around(frame.x(semiMajorAxisAu), frame.y(massMjup), 9),
     );
-    return contourLabels(map, frame, range ? rangePx(range, frame) : frame, dots);
-  }, [map, frame, range, detections]);
+    return contourLabels(contours, range ? rangePx(range, frame) : frame, dots);
+  }, [contours, frame, range, detections]);
   const sentence = useMemo(
     () => mapSentence(map, subject, range, detections),
     [map, subject, range, detections],
@@ -127,7 +130,7 @@ export function CompletenessMapChart(props: CompletenessMapChartProps) {
       <MapAxes map={map} frame={frame} />
     </ChartFigure>
   );
-}
+});
 
 function around(x: number, y: number, reach: number): Box {
   return { left: x - reach, right: x + reach, top: y - reach, bottom: y + reach };

@@ -1,6 +1,6 @@
 'use client';
 
-import { useState } from 'react';
+import { memo, useState } from 'react';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
@@ -34,7 +34,7 @@ export interface DepthChartProps {
 }
 
 /** Depth of search: areas of the surveys on each other, the largest at the bottom, named inside. */
-export function DepthChart(props: DepthChartProps) {
+export const DepthChart = memo(function DepthChart(props: DepthChartProps) {
   const { semiMajorAxisAu, series, range, height = 150, hasAxisNumbers = false } = props;
   const [measure, width] = useWidth<HTMLDivElement>(760);
   const [at, setAt] = useState<ReadPlace>();
@@ -133,7 +133,7 @@ export function DepthChart(props: DepthChartProps) {
       </text>
     </ChartFigure>
   );
-}
+});
 
 interface Layer {
   of: DepthSeries;

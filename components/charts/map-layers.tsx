@@ -44,11 +44,18 @@ export const MapBands = memo(function MapBands({ map, width, height, margin }: M
 
 export const contourLevels = [0.1, 0.3, 0.5, 0.7, 0.9];
 
+/** The contours whose numbers `contourLabels` places. */
+export const contoursOf = (map: MapData, frame: MapFrame) => isolines(map, contourLevels, frame);
+
 /** Places for the numbers of the contours, inside a part of the frame and clear of other marks. */
-export function contourLabels(map: MapData, frame: MapFrame, inside: Box, marks: Box[] = []) {
+export function contourLabels(
+  contours: ReturnType<typeof contoursOf>,
+  inside: Box,
+  marks: Box[] = [],
+) {
   const wantedX = inside.left + 0.62 * (inside.right - inside.left);
   const taken = [...marks];
-  return isolines(map, contourLevels, frame).flatMap((line) => {
+  return contours.flatMap((line) => {
     const place = labelPoint(line, wantedX, inside, taken);
     if (!place) return [];
     taken.push(place.box);

@@ -68,9 +68,9 @@ export function bandPath(
     const [low, high] = [y(lower[index]), y(upper[index])];
     if (!Number.isFinite(low) || !Number.isFinite(high)) continue;
     there.push(`${at},${px(high)}`);
-    back.unshift(`${at},${px(low)}`);
+    back.push(`${at},${px(low)}`);
   }
-  return there.length < 2 ? '' : `M${[...there, ...back].join('L')}Z`;
+  return there.length < 2 ? '' : `M${[...there, ...back.reverse()].join('L')}Z`;
 }
 
 /**
@@ -92,4 +92,13 @@ export function valueAt(xs: ArrayLike<number>, ys: ArrayLike<number>, at: number
   }
   const share = (at - xs[low]) / (xs[high] - xs[low]);
   return ys[low] + share * (ys[high] - ys[low]);
+}
+
+/** Discs of one radius as one path. */
+export function dotsPath(centres: readonly { x: number; y: number }[], radius: number): string {
+  const r = px(radius);
+  const half = (across: number) => `a${r},${r} 0 1 0 ${px(across)},0`;
+  return centres
+    .map(({ x, y }) => `M${px(x - radius)},${px(y)}${half(2 * radius)}${half(-2 * radius)}Z`)
+    .join('');
 }

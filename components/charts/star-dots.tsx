@@ -5,6 +5,7 @@ import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import type { DataTable } from './data-table';
+import { dotsPath } from './paths';
 import { scaleLinear } from './scales';
 import { seriesColour } from './series';
 import { type Lasso, StarLasso } from './star-lasso';
@@ -89,6 +90,7 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
   const { x, placed, apart } = layout;
   const radius = apart * 0.45;
   const y = (row: number) => bottom - radius - 2 - row * apart;
+  const dots = dotsByColour(placed, y, radius);
   const points = placed.map((star) => ({ x: star.x, y: y(star.row) }));
   const ticks = withUnit(linearTicks(0, 100 * max, width - 34, 70), '\u2009%');
   const isNarrow = width < 520;
@@ -138,17 +140,8 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
       >
         carry half of the sum
       </text>
-      {placed.map((star) => (
-        <circle
-          key={star.name}
-          className="star-dot"
-          cx={star.x}
-          cy={y(star.row)}
-          r={radius}
-          style={{
-            fill: star.seriesIndex === undefined ? 'var(--ink)' : seriesColour(star.seriesIndex),
-          }}
-        />
+      {dots.map(({ colour, path }) => (
+        <path key={colour} className="star-dot" d={path} style={{ fill: colour }} />
       ))}
       {placed
         .filter(({ name }) => selected.has(name))
@@ -217,6 +210,18 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
       />
     </ChartFigure>
   );
+}
+
+/** All dots of a colour in one mark: hundreds of marks of their own would cost a drag its frames. */
+function dotsByColour(placed: Placed[], y: (row: number) => number, radius: number) {
+  const points = new Map<string, { x: number; y: number }[]>();
+  for (const { x, row, seriesIndex } of placed) {
+    const colour = seriesIndex === undefined ? 'var(--ink)' : seriesColour(seriesIndex);
+    const of = points.get(colour) ?? [];
+    of.push({ x, y: y(row) });
+    points.set(colour, of);
+  }
+  return [...points].map(([colour, of]) => ({ colour, path: dotsPath(of, radius) }));
 }
 
 function sayStar(star: Placed): string[] {

@@ -1,4 +1,4 @@
-import type { ReactNode } from 'react';
+import { memo, type ReactNode } from 'react';
 import { StateMark } from '@/components/ui/state-mark';
 import { describeCandidates, type StatedCandidates } from '@/lib/inference';
 import { formatPercent } from '@/lib/quantities/display';
@@ -17,7 +17,7 @@ interface ChecksStripProps {
 }
 
 /** What a reader should know before the number is used, in one line. */
-export function ChecksStrip(props: ChecksStripProps) {
+export const ChecksStrip = memo(function ChecksStrip(props: ChecksStripProps) {
   const { inputs, shareOutsideMaps, shareFlaggedCooling, candidates, ofRun } = props;
   const inRun = ofRun === undefined ? '' : `, run ${ofRun}`;
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
@@ -53,4 +53,4 @@ export function ChecksStrip(props: ChecksStripProps) {
       )}
     </div>
   );
-}
+});

@@ -35,32 +35,6 @@ export function spread([from, to]: [number, number], steps = STEPS): number[] {
   return Array.from({ length: steps + 1 }, (_, i) => from + (i * (to - from)) / steps);
 }
 
-const fieldOf = { mass: 'massIndex', semiMajorAxis: 'semiMajorAxisIndex' } as const;
-
-/** Limits against one index; only the moving axis is weighed anew. */
-export function traceIndex(
-  sample: LiveSample,
-  setting: LiveSetting,
-  moving: MovingAxis,
-  logIndices: number[],
-): Trace {
-  const { definition } = setting;
-  const asked = askedOf(sample, setting);
-  const still = orNull(() => populationWeights(sample.grid, definition));
-  if (still === null) return { values: logIndices, limits: logIndices.map(() => Number.NaN) };
-  const { maps, grid } = sample;
-  const contracted = contractStillAxis(maps, grid, moving, still[otherAxis[moving]]);
-  const limits = logIndices.map((index) => {
-    const population = { ...definition, [fieldOf[moving]]: index };
-    const limit = orNull(() => {
-      const weights = weightsWhileMoving(grid, population, moving, still);
-      return answerFromView(viewContracted(contracted, weights, population), asked).limit;
-    });
-    return limit ?? Number.NaN;
-  });
-  return { values: logIndices, limits };
-}
-
 export function traceLevel(
   sample: LiveSample,
   view: PopulationView,
@@ -146,38 +120,89 @@ export interface Consequences {
 
 const LEVEL_STEPS = 48;
 
+/**
+ * Work that may be laid down after each step, for what is more urgent.
+ *
+ * The last value is the answer.
+ */
+export type Steps<Answer> = Generator<void, Answer>;
+
 /** @returns null where the population lies outside the maps */
-export function consequencesOf(
+export function* consequencesInSteps(
   sample: LiveSample,
   setting: LiveSetting,
   saved: LiveSetting,
-): Consequences | null {
+): Steps<Consequences | null> {
   const view = orNull(() => viewPopulation(sample.maps, sample.grid, setting.definition));
   if (view === null) return null;
   const levels = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
   const laws = lawsOffered(setting, saved);
+  const switches = switchConsequences(sample, view, setting, saved, laws);
+  yield;
   return {
-    massIndex: linearTrace(sample, setting, saved, 'massIndex'),
-    semiMajorAxisIndex: linearTrace(sample, setting, saved, 'semiMajorAxisIndex'),
+    massIndex: yield* linearTrackInSteps(sample, setting, saved, 'massIndex'),
+    semiMajorAxisIndex: yield* linearTrackInSteps(sample, setting, saved, 'semiMajorAxisIndex'),
     level: traceLevel(sample, view, setting, spread(levels, LEVEL_STEPS)),
-    switches: switchConsequences(sample, view, setting, saved, laws),
+    switches,
   };
 }
 
+/** All steps at once. */
+export function finishSteps<Answer>(steps: Steps<Answer>): Answer {
+  for (;;) {
+    const { done, value } = steps.next();
+    if (done) return value;
+  }
+}
+
+type IndexField = 'massIndex' | 'semiMajorAxisIndex';
+
+/** The last track of each index: it stays the same while its own control is moved. */
+const lastTracks = new WeakMap<LiveSample, Map<IndexField, { key: string; track: Trace }>>();
+
 /** The track of an index between its ends, both in the linear convention. */
-export function linearTrace(
+export function* linearTrackInSteps(
   sample: LiveSample,
   setting: LiveSetting,
   saved: LiveSetting,
-  field: 'massIndex' | 'semiMajorAxisIndex',
-): Trace {
+  field: IndexField,
+): Steps<Trace> {
   const linear = (of: LiveSetting) => fromLogIndex(of.definition[field], 'linear');
   const values = spread(trackOf(TRACK[field], linear(setting), linear(saved)));
-  const { limits } = traceIndex(
-    sample,
-    setting,
-    field === 'massIndex' ? 'mass' : 'semiMajorAxis',
-    values.map((index) => toLogIndex(index, 'linear')),
-  );
-  return { values, limits };
+  const others = { ...setting, definition: { ...setting.definition, [field]: undefined } };
+  const key = JSON.stringify([others, values]);
+  const kept = lastTracks.get(sample) ?? new Map();
+  const last = kept.get(field);
+  if (last?.key === key) return last.track;
+  const limits = yield* limitsAgainstIndex(sample, setting, field, values);
+  const track = { values, limits };
+  lastTracks.set(sample, kept.set(field, { key, track }));
+  return track;
+}
+
+/** NaN where there is none; only the moving axis is weighed anew. */
+function* limitsAgainstIndex(
+  sample: LiveSample,
+  setting: LiveSetting,
+  field: IndexField,
+  linearIndices: number[],
+): Steps<number[]> {
+  const { definition } = setting;
+  const { maps, grid } = sample;
+  const asked = askedOf(sample, setting);
+  const weights = orNull(() => populationWeights(grid, definition));
+  if (weights === null) return linearIndices.map(() => Number.NaN);
+  const moving: MovingAxis = field === 'massIndex' ? 'mass' : 'semiMajorAxis';
+  const contracted = contractStillAxis(maps, grid, moving, weights[otherAxis[moving]]);
+  const limits: number[] = [];
+  for (const index of linearIndices) {
+    yield;
+    const population = { ...definition, [field]: toLogIndex(index, 'linear') };
+    const limit = orNull(() => {
+      const moved = weightsWhileMoving(grid, population, moving, weights);
+      return answerFromView(viewContracted(contracted, moved, population), asked).limit;
+    });
+    limits.push(limit ?? Number.NaN);
+  }
+  return limits;
 }

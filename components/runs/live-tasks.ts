@@ -1,11 +1,11 @@
 import { limitPlane } from '@/components/populations/limit-plane';
 import { parameterTrace } from '@/components/populations/preview-figures';
-import { consequencesOf } from './consequences';
+import { consequencesInSteps, type Steps } from './consequences';
 import type { LiveSample } from './live-sample';
 
 /** What takes longer than a frame: done beside the page, in a thread of its own. */
 export const liveTasks = {
-  consequences: consequencesOf,
+  consequences: consequencesInSteps,
   limitPlane,
   parameterTrace,
 };
@@ -20,7 +20,8 @@ export type TaskArguments<Name extends TaskName> = LiveTasks[Name] extends (
 ) => unknown
   ? Rest
   : never;
-export type TaskAnswer<Name extends TaskName> = ReturnType<LiveTasks[Name]>;
+export type TaskAnswer<Name extends TaskName> =
+  ReturnType<LiveTasks[Name]> extends Steps<infer Answer> ? Answer : ReturnType<LiveTasks[Name]>;
 
 export type ToThread =
   | { kind: 'sample'; sample: LiveSample }

@@ -1,23 +1,43 @@
+import type { Steps } from './consequences';
 import type { LiveSample } from './live-sample';
 import { type FromThread, liveTasks, type ToThread } from './live-tasks';
+
+/** Work and rest in turn, so that a machine of two cores keeps one for the page. */
+const WORK_MS = 4;
+const REST_MS = 4;
 
 let sample: LiveSample | undefined;
 
 /** The thread's side: it keeps the maps and answers one question after the other. */
-self.onmessage = ({ data }: MessageEvent<ToThread>) => {
+self.onmessage = async ({ data }: MessageEvent<ToThread>) => {
   if (data.kind === 'sample') {
     sample = data.sample;
     return;
   }
-  self.postMessage(answer(data));
+  self.postMessage(await answer(data));
 };
 
-function answer({ id, name, rest }: Extract<ToThread, { kind: 'ask' }>): FromThread {
+async function answer({ id, name, rest }: Extract<ToThread, { kind: 'ask' }>): Promise<FromThread> {
   try {
     if (sample === undefined) throw new Error('no maps have arrived');
     const task = liveTasks[name] as (sample: LiveSample, ...rest: unknown[]) => unknown;
-    return { id, answer: task(sample, ...rest) };
+    const given = task(sample, ...rest);
+    return { id, answer: isSteps(given) ? await takeTurns(given) : given };
   } catch (reason) {
     return { id, fault: reason instanceof Error ? reason.message : String(reason) };
+  }
+}
+
+const isSteps = (given: unknown): given is Steps<unknown> =>
+  typeof given === 'object' && given !== null && Symbol.iterator in given && 'next' in given;
+
+async function takeTurns(steps: Steps<unknown>): Promise<unknown> {
+  for (;;) {
+    const end = performance.now() + WORK_MS;
+    while (performance.now() < end) {
+      const { done, value } = steps.next();
+      if (done) return value;
+    }
+    await new Promise((resolve) => setTimeout(resolve, REST_MS));
   }
 }

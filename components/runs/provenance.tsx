@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { FoldSection } from '@/components/ui/fold-section';
 import { FormulaWords } from '@/components/ui/formula-words';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
@@ -14,7 +15,7 @@ interface ProvenanceSectionProps {
 }
 
 /** Everything that a run's number was made from, a step each. */
-export function ProvenanceSection(props: ProvenanceSectionProps) {
+export const ProvenanceSection = memo(function ProvenanceSection(props: ProvenanceSectionProps) {
   const { collaboration, run, result, isLive = false } = props;
   const steps = provenanceSteps(collaboration, run);
   return (
@@ -33,7 +34,7 @@ export function ProvenanceSection(props: ProvenanceSectionProps) {
       <ProvenanceDetails run={run} result={result} />
     </FoldSection>
   );
-}
+});
 
 function provenanceSteps(collaboration: string, run: RunView): ProvenanceStep[] {
   const { inputs, result } = run;

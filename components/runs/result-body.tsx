@@ -1,10 +1,19 @@
 'use client';
 
 import dynamic from 'next/dynamic';
-import { type ReactNode, useCallback, useDeferredValue, useMemo, useRef, useState } from 'react';
+import {
+  type ComponentProps,
+  memo,
+  type ReactNode,
+  useCallback,
+  useMemo,
+  useRef,
+  useState,
+} from 'react';
 import type { PosteriorView } from '@/components/charts/posterior-chart';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useCalm } from '@/components/hooks/use-calm';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
@@ -17,7 +26,7 @@ import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
-import { sampleOf } from './live-sample';
+import { type LiveSample, sampleOf } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
 import { ProvenanceSection } from './provenance';
@@ -62,15 +71,26 @@ export function ResultBody(props: ResultBodyProps) {
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);
   const sample = useMemo(() => maps && sampleOf(inputs, maps), [inputs, maps]);
   const outcome = useLiveResult(sample, setting);
-  const tracks = useLiveTask(sample, 'consequences', setting, inRun);
   const shown = useMemo(
     () => showResult(inputs, result, inRun, setting, outcome),
     [inputs, result, inRun, setting, outcome],
   );
   const { map, depth, profiles } = useMapFigures(result, inputs, sample, setting.definition);
   const onDefinition = useLatestDefinition(setting, onSetting);
-  const later = useDeferredValue(
-    useMemo(() => ({ shown, depth, definition: setting.definition }), [shown, depth, setting]),
+  const followed = useMemo(
+    () => ({ shown, depth, definition: setting.definition }),
+    [shown, depth, setting],
+  );
+  const calibration = useMemo(
+    () => (
+      <CalibrationCheck
+        collaboration={collaboration}
+        analysisKey={run.analysis.key}
+        runId={run.id}
+        ofRun={shown.isLive ? run.number : undefined}
+      />
+    ),
+    [collaboration, run, shown.isLive],
   );
   const insideCount = inputs.companions.length - shown.outside.length;
 
@@ -100,23 +120,17 @@ export function ResultBody(props: ResultBodyProps) {
         </div>
       )}
       <div className="mt-2.5">
-        <ResultConsole
+        <LiveConsole
+          sample={sample}
           setting={setting}
           saved={inRun}
           quantity={quantityOf(setting.likelihood)}
           grid={map}
-          consequences={tracks.answer ?? undefined}
           profiles={profiles}
           candidates={inputs.undecided.length}
           countedLabel={insideCount === 1 ? '1 vetted' : `${insideCount} vetted`}
           onSetting={onSetting}
         />
-        {tracks.fault !== undefined && (
-          <p className="mt-2 text-note text-warn" role="status">
-            The limits along the tracks could not be computed: {tracks.fault}. Number and curve
-            follow the controls all the same.
-          </p>
-        )}
         {!maps && error === undefined && (
           <p className="mt-2 text-ink3 text-note" role="status">
             Fetching the maps of {result.stars} stars; until then the numbers are those of run{' '}
@@ -130,14 +144,7 @@ export function ResultBody(props: ResultBodyProps) {
         shareFlaggedCooling={result.shareFlaggedCooling}
         candidates={shown.candidates}
         ofRun={shown.isLive ? run.number : undefined}
-        calibration={
-          <CalibrationCheck
-            collaboration={collaboration}
-            analysisKey={run.analysis.key}
-            runId={run.id}
-            ofRun={shown.isLive ? run.number : undefined}
-          />
-        }
+        calibration={calibration}
       />
       <ResultSections
         inputs={inputs}
@@ -145,7 +152,7 @@ export function ResultBody(props: ResultBodyProps) {
         run={run}
         sample={sample}
         map={map}
-        {...later}
+        followed={followed}
         onDefinition={onDefinition}
       />
       <div className="pb-10 md:mt-8">
@@ -178,8 +185,32 @@ export function ResultBody(props: ResultBodyProps) {
   );
 }
 
+/** How often the tracks of the other controls follow a hand. */
+const PACE = { paceMs: 200 };
+
+/** The controls with the limits along their tracks, which a thread beside the page computes. */
+function LiveConsole({
+  sample,
+  ...console
+}: Omit<ComponentProps<typeof ResultConsole>, 'consequences'> & { sample?: LiveSample }) {
+  const { setting, saved } = console;
+  const asked = useCalm(setting, PACE);
+  const { answer, fault } = useLiveTask(sample, 'consequences', asked, saved);
+  return (
+    <>
+      <ResultConsole {...console} consequences={answer} />
+      {fault !== undefined && (
+        <p className="mt-2 text-note text-warn" role="status">
+          The limits along the tracks could not be computed: {fault}. Number and curve follow the
+          controls all the same.
+        </p>
+      )}
+    </>
+  );
+}
+
 /** The statement beside its posterior. */
-function ResultPlate({
+const ResultPlate = memo(function ResultPlate({
   run,
   inputs,
   result,
@@ -247,7 +278,7 @@ function ResultPlate({
       />
     </Plate>
   );
-}
+});
 
 /** A handler that stays the same, so that what is memoised is not drawn anew for its sake. */
 function useLatestDefinition(setting: LiveSetting, onSetting: (setting: LiveSetting) => void) {

@@ -24,8 +24,8 @@ interface ResultConsoleProps {
   saved: LiveSetting;
   quantity: RateQuantity;
   grid: MapGrid;
-  /** Undefined until the maps of the run are there. */
-  consequences?: Consequences;
+  /** Undefined until the maps of the run are there; null where the setting has none. */
+  consequences: Consequences | null | undefined;
   profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
   /** Candidates without an answer in the sample. */
   candidates: number;
@@ -48,8 +48,10 @@ export function ResultConsole(props: ResultConsoleProps) {
         ? formatPercent(value)
         : formatSignificant(100 * value, 2)
       : 'no limit';
-  const consequence = (value: number | undefined) =>
-    value === undefined ? undefined : formatSignificant(100 * value, 2);
+  const consequence = (value: number | undefined) => {
+    if (consequences === undefined) return 'pending';
+    return value === undefined ? undefined : formatSignificant(100 * value, 2);
+  };
   const levelWords = `at ${describeLevel(setting.credibleLevel).replace('\u2009%', ' per cent')}`;
 
   const index = (
@@ -215,7 +217,7 @@ export function ResultConsole(props: ResultConsoleProps) {
         <TraceSlider
           name="Credible level"
           help="credible-level"
-          trace={consequences && asTrace(percent(consequences.level))}
+          trace={consequences ? asTrace(percent(consequences.level)) : undefined}
           value={tidy(100 * setting.credibleLevel)}
           savedValue={tidy(100 * saved.credibleLevel)}
           min={100 * levelMin}

@@ -1,8 +1,10 @@
 'use client';
 
-import { memo } from 'react';
+import { memo, useCallback, useMemo, useRef } from 'react';
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { MapData } from '@/components/charts/map-contours';
+import type { MapRange } from '@/components/charts/range-box';
+import { useCalm } from '@/components/hooks/use-calm';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { documentOfShown } from '@/components/statement/document-of-shown';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
@@ -23,91 +25,137 @@ interface ResultSectionsProps {
   result: RunResult;
   run: RunView;
   sample?: LiveSample;
-  shown: ShownResult;
   map: MapData;
-  depth: DepthSeries[];
-  /** The ranges as they are now, in the map's box. */
-  definition: PowerLawDefinition;
+  followed: Followed;
   onDefinition(definition: PowerLawDefinition): void;
 }
 
-/**
- * Sections 2 to 5. They hold thousands of marks, so they follow a drag with lower priority than
- * the number and its curve.
- */
+/** What follows a drag. */
+interface Followed {
+  shown: ShownResult;
+  depth: DepthSeries[];
+  /** The ranges as they are now, in the map's box. */
+  definition: PowerLawDefinition;
+}
+
+const PACE_MS = 250;
+
+/** Sections 2 to 5: they hold thousands of marks, so each follows a drag at its own pace. */
 export const ResultSections = memo(function ResultSections(props: ResultSectionsProps) {
-  const { inputs, result, run, sample, shown, map, depth, definition } = props;
-  const { quantity, setting } = shown;
-  const beside = shown.beside();
-  const ofRun = shown.isLive ? run.number : undefined;
   return (
     <>
       <div className="grid min-w-0 gap-x-[60px] md:gap-y-8 xl:grid-cols-[minmax(0,780fr)_minmax(0,520fr)]">
-        <SensitivitySection
-          map={map}
-          stars={result.stars}
-          exposure={shown.exposure}
-          depth={depth}
-          range={definition}
-          companions={inputs.companions}
-          onRange={(range) => props.onDefinition({ ...definition, ...range })}
-        />
-        <div className="grid min-w-0 content-start md:gap-y-8">
-          <FoldSection
-            number={3}
-            title="Limits by credible level"
-            help="credible-level"
-            answer={levelsInWords(shown)}
-          >
-            <LevelTable
-              levels={shown.levels()}
-              credibleLevel={setting.credibleLevel}
-              quantity={quantity}
-              detections={shown.counted.length}
-              copyOf={(level, limit) => (
-                <ShownStatementCopy
-                  label="Copy"
-                  align="right"
-                  of={`the ${describeLevel(level)} limit`}
-                  make={async () =>
-                    documentOfShown({ run, inputs, result, shown, row: { level, limit } })
-                  }
-                />
-              )}
-              foot={
-                <>
-                  <MassRange definition={setting.definition} />,{' '}
-                  <AxisRange definition={setting.definition} />;{' '}
-                  {describePrior(setting.prior, quantity)}.
-                  {shown.missingColumn !== null && ` There is ${shown.missingColumn}.`}
-                </>
+        <Sensitivity {...props} />
+        <LimitsAndDetections {...props} />
+      </div>
+      <Stars {...props} />
+    </>
+  );
+});
+
+const Sensitivity = memo(function Sensitivity(props: ResultSectionsProps) {
+  const { map, result, inputs, followed, onDefinition } = props;
+  const place = useRef<HTMLDivElement>(null);
+  const { shown, depth } = useCalm(followed, { paceMs: PACE_MS, seen: place });
+  const range = useCalm(useRange(followed.definition), { paceMs: 0, seen: place });
+  const latest = useRef(followed.definition);
+  latest.current = followed.definition;
+  const onRange = useCallback(
+    (next: MapRange) => onDefinition({ ...latest.current, ...next }),
+    [onDefinition],
+  );
+  return (
+    <div ref={place} className="min-w-0">
+      <SensitivitySection
+        map={map}
+        stars={result.stars}
+        exposure={shown.exposure}
+        depth={depth}
+        range={range}
+        companions={inputs.companions}
+        onRange={onRange}
+      />
+    </div>
+  );
+});
+
+/** The ranges of a population, the same object until one of them changes. */
+function useRange(definition: PowerLawDefinition): MapRange {
+  const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } = definition;
+  return useMemo(
+    () => ({ massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu }),
+    [massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu],
+  );
+}
+
+const LimitsAndDetections = memo(function LimitsAndDetections(props: ResultSectionsProps) {
+  const { inputs, result, run } = props;
+  const place = useRef<HTMLDivElement>(null);
+  const { shown } = useCalm(props.followed, { paceMs: PACE_MS, seen: place });
+  const { quantity, setting } = shown;
+  const beside = shown.beside();
+  return (
+    <div ref={place} className="grid min-w-0 content-start md:gap-y-8">
+      <FoldSection
+        number={3}
+        title="Limits by credible level"
+        help="credible-level"
+        answer={levelsInWords(shown)}
+      >
+        <LevelTable
+          levels={shown.levels()}
+          credibleLevel={setting.credibleLevel}
+          quantity={quantity}
+          detections={shown.counted.length}
+          copyOf={(level, limit) => (
+            <ShownStatementCopy
+              label="Copy"
+              align="right"
+              of={`the ${describeLevel(level)} limit`}
+              make={async () =>
+                documentOfShown({ run, inputs, result, shown, row: { level, limit } })
               }
             />
-            {beside && <BesideTable beside={beside} quantity={quantity} />}
-          </FoldSection>
-          <DetectionsSection
-            companions={inputs.companions}
-            undecided={inputs.undecided}
-            counted={shown.counted.map(({ name }) => name)}
-            outside={shown.outside}
-            candidates={shown.candidates}
-            ofRun={ofRun}
-          />
-        </div>
-      </div>
-      <div className="md:mt-8">
-        <StarsSection
-          inputs={inputs}
-          result={result}
-          sample={sample}
-          view={shown.view}
-          setting={setting}
-          limit={shown.answer.limit}
-          quantity={quantity}
-          counted={shown.counted}
+          )}
+          foot={
+            <>
+              <MassRange definition={setting.definition} />,{' '}
+              <AxisRange definition={setting.definition} />;{' '}
+              {describePrior(setting.prior, quantity)}.
+              {shown.missingColumn !== null && ` There is ${shown.missingColumn}.`}
+            </>
+          }
         />
-      </div>
-    </>
+        {beside && <BesideTable beside={beside} quantity={quantity} />}
+      </FoldSection>
+      <DetectionsSection
+        companions={inputs.companions}
+        undecided={inputs.undecided}
+        counted={shown.counted.map(({ name }) => name)}
+        outside={shown.outside}
+        candidates={shown.candidates}
+        ofRun={shown.isLive ? run.number : undefined}
+      />
+    </div>
+  );
+});
+
+const Stars = memo(function Stars({ inputs, result, sample, followed }: ResultSectionsProps) {
+  const place = useRef<HTMLDivElement>(null);
+  const { shown } = useCalm(followed, { paceMs: PACE_MS, seen: place });
+  return (
+    <div ref={place} className="md:mt-8">
+      <StarsSection
+        inputs={inputs}
+        result={result}
+        sample={sample}
+        view={shown.view}
+        setting={shown.setting}
+        limit={shown.answer.limit}
+        quantity={shown.quantity}
+        counted={shown.counted}
+      />
+    </div>
   );
 });
 

@@ -1,5 +1,6 @@
 'use client';
 
+import { useMemo } from 'react';
 import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
 import { DepthChart, type DepthSeries } from '@/components/charts/depth-chart';
 import type { MapDetection } from '@/components/charts/detection-marks';
@@ -25,6 +26,7 @@ interface SensitivitySectionProps {
 /** Depth of search by survey over the mean map, on one axis. */
 export function SensitivitySection(props: SensitivitySectionProps) {
   const { map, stars, exposure, depth, range, companions, onRange } = props;
+  const detections = useMemo(() => companions.map(asMark), [companions]);
   return (
     <FoldSection
       number={2}
@@ -40,7 +42,7 @@ export function SensitivitySection(props: SensitivitySectionProps) {
           subject={`mean detection probability, ${stars} stars`}
           range={range}
           onRangeChange={onRange}
-          detections={companions.map(asMark)}
+          detections={detections}
         />
       </div>
     </FoldSection>

@@ -1,6 +1,7 @@
 'use client';
 
 import Link from 'next/link';
+import { memo } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunStudies } from '@/components/hooks/use-studies';
 import { FoldSection } from '@/components/ui/fold-section';
@@ -16,7 +17,7 @@ interface FurtherQuestionsProps {
 }
 
 /** What may be asked of a run next, with the newest answer of each. */
-export function FurtherQuestions(props: FurtherQuestionsProps) {
+export const FurtherQuestions = memo(function FurtherQuestions(props: FurtherQuestionsProps) {
   const { collaboration, analysisKey, runId, number } = props;
   const { data: studies, error } = useRunStudies(collaboration, runId);
   const newest = newestByKind(studies ?? []);
@@ -72,7 +73,7 @@ export function FurtherQuestions(props: FurtherQuestionsProps) {
       </ul>
     </FoldSection>
   );
-}
+});
 
 /** The newest question of each kind that is on its way or answered; a stopped one where none is. */
 export function newestByKind(studies: StudySummary[]): Map<string, StudySummary> {

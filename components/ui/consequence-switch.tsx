@@ -7,8 +7,11 @@ import type { HelpWord } from '@/lib/help';
 export interface SwitchOption<Value extends string> {
   value: Value;
   label: ReactNode;
-  /** What choosing it would give, in the unit that stands beside the switch: "6.6". */
-  consequence?: string;
+  /**
+   * What choosing it would give, in the unit that stands beside the switch: "6.6". While it is
+   * being computed its place is kept, so that nothing moves when it comes.
+   */
+  consequence?: string | 'pending';
   /** Why it cannot be chosen. */
   disabledReason?: string;
 }
@@ -76,11 +79,17 @@ export function ConsequenceSwitch<Value extends string>({
                 onChange={() => onChange(option.value)}
               />
               <span className="md:whitespace-nowrap">{option.label}</span>
-              {option.consequence !== undefined && (
-                <span className={`font-semibold ${isChosen ? 'text-page' : 'text-bound'}`}>
-                  <span className="sr-only">gives </span>
-                  {option.consequence}
+              {option.consequence === 'pending' ? (
+                <span className="invisible font-semibold" aria-hidden="true">
+                  0.0
                 </span>
+              ) : (
+                option.consequence !== undefined && (
+                  <span className={`font-semibold ${isChosen ? 'text-page' : 'text-bound'}`}>
+                    <span className="sr-only">gives </span>
+                    {option.consequence}
+                  </span>
+                )
               )}
             </label>
           );

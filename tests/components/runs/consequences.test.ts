@@ -1,5 +1,9 @@
 import { describe, expect, it } from 'vitest';
-import { consequencesOf, linearTrace } from '@/components/runs/consequences';
+import {
+  consequencesInSteps,
+  finishSteps,
+  linearTrackInSteps,
+} from '@/components/runs/consequences';
 import { askedOf, liveAnswer } from '@/components/runs/live-answer';
 import { restrictSample } from '@/components/runs/live-sample';
 import type { LiveSetting } from '@/components/runs/live-setting';
@@ -28,9 +32,9 @@ function directLimit(changes: Partial<LiveSetting>): number {
 
 describe('consequences of the controls', () => {
   it.each(['massIndex', 'semiMajorAxisIndex'] as const)(
-    'linearTrace(%s) is the limit of each index, computed from the whole maps',
+    'the track of %s is the limit of each index, computed from the whole maps',
     (field) => {
-      const { values, limits } = linearTrace(sample, setting, setting, field);
+      const { values, limits } = finishSteps(linearTrackInSteps(sample, setting, setting, field));
       values.forEach((value, index) => {
         const moved = { ...definition, [field]: toLogIndex(value, 'linear') };
         expect(limits[index] / directLimit({ definition: moved })).toBeCloseTo(1, 9);
@@ -38,8 +42,23 @@ describe('consequences of the controls', () => {
     },
   );
 
-  it('consequencesOf gives each switch the limit that choosing it would give', () => {
-    const given = consequencesOf(sample, setting, setting);
+  it('a track is kept while its own control moves, and made anew when another does', () => {
+    const track = (changes: Partial<typeof definition>) => {
+      const changed = { ...setting, definition: { ...definition, ...changes } };
+      return finishSteps(linearTrackInSteps(sample, changed, setting, 'massIndex'));
+    };
+    const before = track({});
+    expect(track({ massIndex: definition.massIndex + 0.1 })).toBe(before);
+    const massMinMjup = 1.2 * definition.massMinMjup;
+    const after = track({ massMinMjup });
+    const massIndex = toLogIndex(after.values[3], 'linear');
+    const direct = directLimit({ definition: { ...definition, massMinMjup, massIndex } });
+    expect(after.limits[3] / direct).toBeCloseTo(1, 9);
+    expect(after.limits[3]).not.toBeCloseTo(before.limits[3], 6);
+  });
+
+  it('consequencesInSteps gives each switch the limit that choosing it would give', () => {
+    const given = finishSteps(consequencesInSteps(sample, setting, setting));
     expect(given?.switches.detections.counted).toBe(directLimit({}));
     expect(given?.switches.detections.none).toBe(directLimit({ detections: 'none' }));
     expect(given?.switches.likelihood['mean-number']).toBe(
@@ -49,14 +68,16 @@ describe('consequences of the controls', () => {
   });
 
   it('the track of the level rises', () => {
-    const limits = consequencesOf(sample, setting, setting)?.level.limits ?? [];
+    const limits = finishSteps(consequencesInSteps(sample, setting, setting))?.level.limits ?? [];
     expect(limits.length).toBeGreaterThan(10);
     for (let i = 1; i < limits.length; i++) expect(limits[i]).toBeGreaterThan(limits[i - 1]);
   });
 
-  it('consequencesOf is null where the population lies outside the maps', () => {
+  it('consequencesInSteps is null where the population lies outside the maps', () => {
     const far = { ...definition, semiMajorAxisMinAu: 2000, semiMajorAxisMaxAu: 5000 };
-    expect(consequencesOf(sample, { ...setting, definition: far }, setting)).toBeNull();
+    expect(
+      finishSteps(consequencesInSteps(sample, { ...setting, definition: far }, setting)),
+    ).toBeNull();
   });
 });
 

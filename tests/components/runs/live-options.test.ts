@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { consequencesOf } from '@/components/runs/consequences';
+import { consequencesInSteps, finishSteps } from '@/components/runs/consequences';
 import { settingFromQuery } from '@/components/runs/live-address';
 import { liveAnswer } from '@/components/runs/live-answer';
 import {
@@ -76,7 +76,7 @@ describe('a live answer with candidates and a background', () => {
   });
 
   it('shows what each treatment would give', () => {
-    const given = consequencesOf(sample, setting, setting)?.switches;
+    const given = finishSteps(consequencesInSteps(sample, setting, setting))?.switches;
     const aside = liveAnswer(sample, view, { ...setting, candidates: undefined });
     expect(given?.candidates.none).toBe(aside.answer.limit);
     expect(given?.candidates.fixed).toBe(liveAnswer(sample, view, setting).answer.limit);
