@@ -9,7 +9,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
-import type { SampleView } from '@/lib/schemas/samples';
+import type { SamplePreview, SampleView } from '@/lib/schemas/samples';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import { SampleCounts } from './sample-counts';
 import { draftOf, EMPTY_DRAFT, readDraft, type SampleDraft } from './sample-draft';
@@ -23,17 +23,21 @@ interface SamplesScreenProps {
   collaboration: string;
   surveys: SurveyView[];
   initial: SampleView[];
+  /** What a selection without any condition holds. */
+  firstPreview?: SamplePreview;
 }
 
 /** Saved selections of stars, and one that is being made, with what it holds at each change. */
-export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreenProps) {
+export function SamplesScreen(props: SamplesScreenProps) {
+  const { collaboration, surveys, initial, firstPreview } = props;
   const { data: samples = initial, mutate } = useSamples(collaboration, initial);
   const [draft, setDraft] = useState<SampleDraft>(EMPTY_DRAFT);
   const schema = useSchema(loadSchema);
   const read = schema && readDraft(draft, schema);
   const definition = read?.definition;
   const asked = useDeferredValue(definition);
-  const { data: preview, error, isLoading } = useSamplePreview(collaboration, asked);
+  const { data, error, isLoading } = useSamplePreview(collaboration, asked);
+  const preview = data ?? firstPreview;
 
   const saving = useVersionSave<SampleView>(async ({ name, versionOf }) => {
     if (!definition) throw new Error('what is saved was not checked');
@@ -112,7 +116,10 @@ export function SamplesScreen({ collaboration, surveys, initial }: SamplesScreen
               </Notice>
             )}
             {preview ? (
-              <SampleCounts preview={preview} isOld={isLoading || definition === undefined} />
+              <SampleCounts
+                preview={preview}
+                isOld={data !== undefined && (isLoading || definition === undefined)}
+              />
             ) : (
               error === undefined && <p className="text-ink3">The stars are being counted.</p>
             )}

@@ -12,125 +12,80 @@ import { comparisonInWords } from './population-comparison/comparison-words';
 import { sweepInWords } from './sweep/sweep-words';
 import { systematicsInWords } from './systematics/systematics-words';
 
-const AnswerWaits = () => (
-  <p className="max-w-none rounded-plate bg-well px-5 py-16 text-ink3 text-note" role="status">
-    Drawing the answer
-  </p>
-);
-const FormWaits = () => (
-  <p className="max-w-none rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
-    Opening the settings
-  </p>
-);
-
 /**
  * Each kind brings its form, its answer and its numbers; a page loads those of one kind.
- * The options of `dynamic` must be written out at each call: the compiler reads them.
+ * Without a `loading` of their own they come with the page at once: a page that is sent in parts
+ * would show that first, even where nothing is waited for, and then move.
  */
 export const kinds: { [Kind in StudyKind]: KindEntry<Kind> } = {
   systematics: {
-    Form: dynamic(async () => (await import('./systematics/systematics-form')).SystematicsForm, {
-      loading: FormWaits,
-    }),
+    Form: dynamic(async () => (await import('./systematics/systematics-form')).SystematicsForm),
     Answer: dynamic(
       async () => (await import('./systematics/systematics-answer')).SystematicsAnswer,
-      { loading: AnswerWaits },
     ),
     settingsInWords: systematicsInWords,
     loadTables: async () => (await import('./systematics/systematics-tables')).systematicsTables,
   },
   influence: {
-    Form: dynamic(async () => (await import('./influence/influence-form')).InfluenceForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./influence/influence-answer')).InfluenceAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./influence/influence-form')).InfluenceForm),
+    Answer: dynamic(async () => (await import('./influence/influence-answer')).InfluenceAnswer),
     settingsInWords: influenceInWords,
     loadTables: async () => (await import('./influence/influence-tables')).influenceTables,
   },
   'limit-map': {
-    Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./limit-map/limit-map-answer')).LimitMapAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./limit-map/limit-map-form')).LimitMapForm),
+    Answer: dynamic(async () => (await import('./limit-map/limit-map-answer')).LimitMapAnswer),
     settingsInWords: limitMapInWords,
     loadTables: async () => (await import('./limit-map/limit-map-tables')).limitMapTables,
   },
   sweep: {
-    Form: dynamic(async () => (await import('./sweep/sweep-form')).SweepForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./sweep/sweep-form')).SweepForm),
+    Answer: dynamic(async () => (await import('./sweep/sweep-answer')).SweepAnswer),
     settingsInWords: sweepInWords,
     loadTables: async () => (await import('./sweep/sweep-tables')).sweepTables,
   },
   'free-indices': {
-    Form: dynamic(async () => (await import('./free-indices/free-indices-form')).FreeIndicesForm, {
-      loading: FormWaits,
-    }),
+    Form: dynamic(async () => (await import('./free-indices/free-indices-form')).FreeIndicesForm),
     Answer: dynamic(
       async () => (await import('./free-indices/free-indices-answer')).FreeIndicesAnswer,
-      { loading: AnswerWaits },
     ),
     settingsInWords: freeIndicesInWords,
     loadTables: async () => (await import('./free-indices/free-indices-tables')).freeIndicesTables,
   },
   'overlap-rules': {
-    Form: dynamic(async () => (await import('./overlap-rules/overlap-form')).OverlapForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./overlap-rules/overlap-answer')).OverlapAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./overlap-rules/overlap-form')).OverlapForm),
+    Answer: dynamic(async () => (await import('./overlap-rules/overlap-answer')).OverlapAnswer),
     settingsInWords: overlapRulesInWords,
     loadTables: async () => (await import('./overlap-rules/overlap-tables')).overlapTables,
   },
   'population-comparison': {
     Form: dynamic(
       async () => (await import('./population-comparison/comparison-form')).ComparisonForm,
-      { loading: FormWaits },
     ),
     Answer: dynamic(
       async () => (await import('./population-comparison/comparison-answer')).ComparisonAnswer,
-      { loading: AnswerWaits },
     ),
     settingsInWords: comparisonInWords,
     loadTables: async () =>
       (await import('./population-comparison/comparison-tables')).comparisonTables,
   },
   counts: {
-    Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./counts/counts-form')).CountsForm),
+    Answer: dynamic(async () => (await import('./counts/counts-answer')).CountsAnswer),
     settingsInWords: countsInWords,
     loadTables: async () => (await import('./counts/counts-tables')).countsTables,
   },
   calibration: {
-    Form: dynamic(async () => (await import('./calibration/calibration-form')).CalibrationForm, {
-      loading: FormWaits,
-    }),
+    Form: dynamic(async () => (await import('./calibration/calibration-form')).CalibrationForm),
     Answer: dynamic(
       async () => (await import('./calibration/calibration-answer')).CalibrationAnswer,
-      { loading: AnswerWaits },
     ),
     settingsInWords: calibrationInWords,
     loadTables: async () => (await import('./calibration/calibration-tables')).calibrationTables,
   },
   forecast: {
-    Form: dynamic(async () => (await import('./forecast/forecast-form')).ForecastForm, {
-      loading: FormWaits,
-    }),
-    Answer: dynamic(async () => (await import('./forecast/forecast-answer')).ForecastAnswer, {
-      loading: AnswerWaits,
-    }),
+    Form: dynamic(async () => (await import('./forecast/forecast-form')).ForecastForm),
+    Answer: dynamic(async () => (await import('./forecast/forecast-answer')).ForecastAnswer),
     settingsInWords: forecastInWords,
     loadTables: async () => (await import('./forecast/forecast-tables')).forecastTables,
   },

@@ -2,8 +2,10 @@ import type { Metadata } from 'next';
 import { newestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewAnalysis } from '@/components/analyses/new-analysis';
+import { KnownAnswers } from '@/components/hooks/known-answers';
 import { listCombinations } from '@/lib/services/combinations';
 import { listPopulations } from '@/lib/services/populations';
+import { listSamples } from '@/lib/services/samples';
 import { newRecipeDefaults } from '@/lib/services/settings';
 import { listSurveys } from '@/lib/services/surveys';
 
@@ -17,23 +19,27 @@ export default async function NewAnalysisPage({
   searchParams: Promise<Record<string, string | undefined>>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const [surveys, { populations }, run, { combinations }, usual, wanted] = await Promise.all([
-    listSurveys(actor),
-    listPopulations(actor),
-    newestRun(actor),
-    listCombinations(actor),
-    newRecipeDefaults(actor.collaborationId),
-    searchParams,
-  ]);
+  const [surveys, { populations }, run, { combinations }, { samples }, usual, wanted] =
+    await Promise.all([
+      listSurveys(actor),
+      listPopulations(actor),
+      newestRun(actor),
+      listCombinations(actor),
+      listSamples(actor),
+      newRecipeDefaults(actor.collaborationId),
+      searchParams,
+    ]);
   return (
-    <NewAnalysis
-      collaboration={actor.collaboration}
-      surveys={surveys}
-      populations={populations}
-      previewRun={run}
-      usual={usual}
-      wanted={wanted.population}
-      stored={combinations.find(({ id }) => id === wanted.combination)}
-    />
+    <KnownAnswers collaboration={actor.collaboration} answers={{ samples }}>
+      <NewAnalysis
+        collaboration={actor.collaboration}
+        surveys={surveys}
+        populations={populations}
+        previewRun={run}
+        usual={usual}
+        wanted={wanted.population}
+        stored={combinations.find(({ id }) => id === wanted.combination)}
+      />
+    </KnownAnswers>
   );
 }

@@ -1,6 +1,9 @@
 import type { Metadata } from 'next';
 import { currentActor } from '@/app/session';
+import { EMPTY_DRAFT, readDraft } from '@/components/samples/sample-draft';
 import { SamplesScreen } from '@/components/samples/samples-screen';
+import { sampleDefinitionSchema } from '@/lib/schemas/samples';
+import { previewSample } from '@/lib/services/sample-preview';
 import { listSamples } from '@/lib/services/samples';
 import { listSurveys } from '@/lib/services/surveys';
 
@@ -12,12 +15,18 @@ export default async function SamplesPage({
   params: Promise<{ collaboration: string }>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const [{ surveys }, { samples }] = await Promise.all([listSurveys(actor), listSamples(actor)]);
+  const { definition } = readDraft(EMPTY_DRAFT, sampleDefinitionSchema);
+  const [{ surveys }, { samples }, preview] = await Promise.all([
+    listSurveys(actor),
+    listSamples(actor),
+    definition && previewSample(actor, { definition }),
+  ]);
   return (
     <SamplesScreen
       collaboration={actor.collaboration}
       surveys={surveys.filter(({ isArchived }) => !isArchived)}
       initial={samples}
+      firstPreview={preview}
     />
   );
 }

@@ -1,7 +1,11 @@
 import type { Metadata } from 'next';
 import { notFound, redirect } from 'next/navigation';
+import { currentActor } from '@/app/session';
+import { KnownAnswers } from '@/components/hooks/known-answers';
 import { isStudyKind, kindWords, questionAddress } from '@/components/studies/kind-words';
 import { StudyPage } from '@/components/studies/study-page';
+import type { StudyKind } from '@/lib/schemas/study-settings';
+import { listPopulations } from '@/lib/services/populations';
 import { answeredInputs } from '../study-inputs';
 
 interface PageProps {
@@ -21,6 +25,20 @@ export default async function FurtherQuestionPage({ params, searchParams }: Page
   // Some kinds have a page of their own.
   const place = questionAddress(collaboration, analysis, kind, answer);
   if (!place.includes('/studies/')) redirect(place);
-  const inputs = await answeredInputs(collaboration, analysis, kind, answer);
-  return <StudyPage key={`${analysis} ${kind}`} kind={kind} answerId={answer} {...inputs} />;
+  const [inputs, answers] = await Promise.all([
+    answeredInputs(collaboration, analysis, kind, answer),
+    offered(collaboration, kind),
+  ]);
+  return (
+    <KnownAnswers collaboration={inputs.collaboration} answers={answers}>
+      <StudyPage key={`${analysis} ${kind}`} kind={kind} answerId={answer} {...inputs} />
+    </KnownAnswers>
+  );
+}
+
+/** What the settings of a kind offer a choice of. */
+async function offered(collaboration: string, kind: StudyKind) {
+  if (kind !== 'population-comparison') return {};
+  const { populations } = await listPopulations(await currentActor(collaboration));
+  return { populations };
 }
