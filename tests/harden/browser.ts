@@ -1,9 +1,9 @@
 import { existsSync } from 'node:fs';
 import { type Browser, chromium, type Page } from '@playwright/test';
+import { CHROMIUM, CHROMIUM_ARGUMENTS } from '../browser/chromium';
 import type { RunningProduct } from './row';
 import { signInOf } from './visitor';
 
-const EXECUTABLE = '/usr/bin/chromium';
 const PATIENCE_MS = 120_000;
 
 /** A browser with one page of the product, signed in through its form. */
@@ -11,11 +11,11 @@ export async function openLaboratory(
   product: RunningProduct,
   role: string,
 ): Promise<{ browser: Browser; page: Page; faults: string[] }> {
-  if (!existsSync(EXECUTABLE)) throw new Error(`${EXECUTABLE} is missing; this row needs it`);
+  if (!existsSync(CHROMIUM)) throw new Error(`${CHROMIUM} is missing; this row needs it`);
   const person = signInOf(product, role);
   const browser = await chromium.launch({
-    executablePath: EXECUTABLE,
-    args: ['--no-sandbox', '--disable-gpu', '--disable-background-networking', '--disable-sync'],
+    executablePath: CHROMIUM,
+    args: CHROMIUM_ARGUMENTS,
   });
   const context = await browser.newContext({
     baseURL: product.address,
