@@ -1,7 +1,7 @@
+import { drawnRun } from '@/app/drawn-run';
 import type { Actor } from '@/lib/access/actor';
 import type { RunSummary, RunView } from '@/lib/schemas/runs';
 import { listAnalyses } from '@/lib/services/analyses';
-import { getRun } from '@/lib/services/runs';
 
 export function isFinished(run: RunSummary): boolean {
   return run.job.status === 'done' && run.limit !== null;
@@ -14,5 +14,5 @@ export async function newestRun(actor: Actor): Promise<RunView | null> {
     .flatMap((analysis) => analysis.runs)
     .filter(isFinished)
     .sort((a, b) => (b.finishedAt ?? '').localeCompare(a.finishedAt ?? ''));
-  return finished.length === 0 ? null : getRun(actor, finished[0].id);
+  return finished.length === 0 ? null : drawnRun(actor, finished[0].id);
 }

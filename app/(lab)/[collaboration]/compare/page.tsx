@@ -1,11 +1,11 @@
 import type { Metadata } from 'next';
+import { drawnRun } from '@/app/drawn-run';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { readSides, writeSide } from '@/components/compare/address';
 import { CompareScreen } from '@/components/compare/compare-screen';
 import { listAnalyses } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
-import { getRun } from '@/lib/services/runs';
 
 export const metadata: Metadata = { title: 'Comparison' };
 
@@ -27,7 +27,7 @@ export default async function ComparePage({
       const run = finished?.find(
         ({ number }) => address.run === undefined || number === address.run,
       );
-      return { address, analysis, run: run ? await getRun(actor, run.id) : null };
+      return { address, analysis, run: run ? await drawnRun(actor, run.id) : null };
     }),
   );
   const used = sides.flatMap(({ run }) => run?.inputs?.population.id ?? []);

@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
+import { drawnRun } from '@/app/drawn-run';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { settingFromQuery } from '@/components/runs/live-address';
@@ -11,7 +12,6 @@ import { NotFound } from '@/lib/errors';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import { getAnalysis } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
-import { getRun } from '@/lib/services/runs';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string }>;
@@ -27,7 +27,7 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
   const actor = await currentActor(collaboration);
   const analysis = await findAnalysis(actor, key);
   const finished = analysis.runs.find(isFinished);
-  const run = finished ? await getRun(actor, finished.id) : null;
+  const run = finished ? await drawnRun(actor, finished.id) : null;
   const used = run?.inputs?.population.id;
   const { definition } = analysis.population;
   const asked = isPlainPowerLaw(definition)

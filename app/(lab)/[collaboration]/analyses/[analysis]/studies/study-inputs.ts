@@ -1,4 +1,5 @@
 import { notFound } from 'next/navigation';
+import { drawnRun } from '@/app/drawn-run';
 import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import type { Actor } from '@/lib/access/actor';
@@ -7,7 +8,6 @@ import { studyQuerySchema } from '@/lib/schemas/studies';
 import type { StudyKind } from '@/lib/schemas/study-settings';
 import { getAnalysis } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
-import { getRun } from '@/lib/services/runs';
 import { getStudy, listStudies } from '@/lib/services/studies';
 
 /** The questions of a kind, and the answer that is shown first: the one asked for, or the newest. */
@@ -32,7 +32,7 @@ export async function studyInputs(collaboration: string, analysisKey: string) {
   try {
     const analysis = await getAnalysis(actor, analysisKey);
     const finished = analysis.runs.find(isFinished);
-    const run = finished ? await getRun(actor, finished.id) : null;
+    const run = finished ? await drawnRun(actor, finished.id) : null;
     const used = run?.inputs?.population.id;
     const populations = used ? await findPopulationsById(actor, [used]) : undefined;
     return {
