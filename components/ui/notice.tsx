@@ -30,7 +30,7 @@ export function Notice({ tone, title, children, actions, icon, isAnnounced = fal
       className={`flex flex-wrap items-center gap-x-3 gap-y-1.5 rounded px-3.5 py-[9px] text-note ${look.ground}`}
       role={isAnnounced ? (tone === 'bad' ? 'alert' : 'status') : undefined}
     >
-      <span className={look.mark}>
+      <span className={`self-start pt-px ${look.mark}`}>
         <Icon name={icon ?? look.icon} size={18} />
       </span>
       <div className="min-w-0 flex-1 basis-60 text-ink2">

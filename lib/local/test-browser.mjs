@@ -7,6 +7,7 @@ import { countPages, measurePages } from './page-sizes.mjs';
 import { findFreePort } from './ports.mjs';
 import { run } from './process-run.mjs';
 import { chooseMail, productEnvironment, runScript, startProduct } from './product.mjs';
+import { webService } from './services.mjs';
 import { Supervisor } from './supervisor.mjs';
 import { testDistFolder, testEnvironment } from './test-checks.mjs';
 import { countCommand, countPlaywright } from './test-counts.mjs';
@@ -99,6 +100,15 @@ export async function runBrowserTests(cluster, options) {
   }
 }
 
+/** How a test starts one more web server of this product, which it may kill. */
+function webServer(product) {
+  const { command, args, env } = webService({
+    ...product,
+    environment: () => productEnvironment(product),
+  });
+  return { command, args: args.slice(0, -1), env: env() };
+}
+
 async function runPlaywright(product, { reportFile, files = [], environment = {} }) {
   rmSync(reportFile, { force: true });
   const { code, output } = await run(
@@ -111,6 +121,7 @@ async function runPlaywright(product, { reportFile, files = [], environment = {}
         MAILBOX_URL: productEnvironment(product).MAILBOX_URL,
         RAREBOUND_DATA_DIR: product.folder,
         PLAYWRIGHT_JSON_OUTPUT_FILE: reportFile,
+        WEB_SERVER: JSON.stringify(webServer(product)),
         FORCE_COLOR: '0',
         ...environment,
       }),
