@@ -1,3 +1,4 @@
 /** What answers a moved control: of use only with the maps, and so fetched beside them. */
 export { liveAnswer } from './live-answer';
 export { LiveViews } from './live-views';
+export { rehearseDrag } from './rehearsal';

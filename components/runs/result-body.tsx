@@ -186,7 +186,7 @@ export function ResultBody(props: ResultBodyProps) {
 }
 
 /** How often the tracks of the other controls follow a hand. */
-const PACE = { paceMs: 200 };
+const PACE = { paceMs: 250 };
 
 /** The controls with the limits along their tracks, which a thread beside the page computes. */
 function LiveConsole({

@@ -1,8 +1,9 @@
 'use client';
 
-import { useMemo } from 'react';
+import { useEffect, useMemo, useRef } from 'react';
 import { useLoaded } from '@/components/hooks/use-loaded';
 import type { PopulationView } from '@/lib/inference';
+import type { Steps } from './consequences';
 import type { LiveAnswer } from './live-answer';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
@@ -22,6 +23,7 @@ export function useLiveResult(
     () => (sample && engine ? new engine.LiveViews(sample) : undefined),
     [sample, engine],
   );
+  useRehearsal(engine, sample, setting);
   const view = useMemo(
     () => views && attempt(() => views.of(setting.definition)),
     [views, setting.definition],
@@ -32,6 +34,28 @@ export function useLiveResult(
     const live = attempt(() => engine.liveAnswer(sample, view.value, setting));
     return live.fault === undefined ? { view: view.value, live: live.value } : live;
   }, [sample, engine, view, setting]);
+}
+
+/** Once a sample, one step whenever the browser has nothing else to do. */
+function useRehearsal(
+  engine: typeof import('./live-engine') | undefined,
+  sample: LiveSample | undefined,
+  setting: LiveSetting,
+): void {
+  const begun = useRef<{ of: LiveSample; steps: Steps<void> }>(undefined);
+  useEffect(() => {
+    if (!engine || !sample) return;
+    if (begun.current?.of !== sample) {
+      begun.current = { of: sample, steps: engine.rehearseDrag(sample, setting) };
+    }
+    const { steps } = begun.current;
+    const later = window.requestIdleCallback ?? ((act: () => void) => window.setTimeout(act, 50));
+    const cancel = window.cancelIdleCallback ?? window.clearTimeout;
+    let next = later(function step() {
+      if (!steps.next().done) next = later(step);
+    });
+    return () => cancel(next);
+  }, [engine, sample, setting]);
 }
 
 function attempt<T>(
