@@ -11,6 +11,7 @@ import { FactsStrip } from '@/components/ui/facts-strip';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatSignificant } from '@/lib/quantities/display';
+import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import type { Estimated } from './estimated';
@@ -22,13 +23,15 @@ interface EstimateProps {
   run: RunView | null;
   surveys: SurveyView[];
   setting?: LiveSetting;
+  /** Known before the choices were checked: what the estimate will be of. */
+  expected?: Pick<LiveSetting, 'definition' | 'credibleLevel'>;
   /** The population has a law that only a run can answer. */
   needsRun?: boolean;
 }
 
 /** What the choices would give, from maps that a run has used already. */
 export function Estimate(props: EstimateProps) {
-  const { collaboration, run, surveys, setting, needsRun = false } = props;
+  const { collaboration, run, surveys, setting, expected, needsRun = false } = props;
   const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
   const inputs = run?.inputs ?? undefined;
   const ids = surveys.map((survey) => survey.id).join();
@@ -40,8 +43,20 @@ export function Estimate(props: EstimateProps) {
         : {},
     [maps, inputs, setting, ids, engine],
   );
+  const known = setting ?? expected;
+  const isPending = error === undefined && (isLoading || engine === undefined || known !== setting);
   const missing = surveys.filter(
     (survey) => !inputs?.surveys.some((known) => known.id === survey.id),
+  );
+
+  const about = (definition: PowerLawDefinition) => (
+    <p className="text-ink2 text-note">
+      About this, for planets of <MassRange definition={definition} /> at{' '}
+      <AxisRange definition={definition} />. From the maps of {run?.analysis.key}, run {run?.number}
+      {missing.length > 0 &&
+        `; ${listNames(missing.map((survey) => survey.name))} did not take part in it`}
+      . The run itself may differ where maps are newer.
+    </p>
   );
 
   return (
@@ -49,29 +64,22 @@ export function Estimate(props: EstimateProps) {
       <SectionOpener title="Estimate" context="before the first run" />
       {estimate && setting && estimate.posterior.constrained ? (
         <>
-          <FactsStrip
-            facts={[
-              {
-                name: `${describeLevel(setting.credibleLevel)}, ${countOf(estimate.counted.length)}`,
-                value: formatLimit(estimate.limit, estimate.posterior.quantity),
-                isBound: true,
-              },
-              {
-                name: 'sum of detection probabilities',
-                help: 'exposure',
-                value: formatSignificant(estimate.exposure, 3),
-                note: `of ${estimate.stars}`,
-              },
-            ]}
+          <EstimateFacts
+            credibleLevel={setting.credibleLevel}
+            detections={countOf(estimate.counted.length)}
+            limit={formatLimit(estimate.limit, estimate.posterior.quantity)}
+            exposure={formatSignificant(estimate.exposure, 3)}
+            stars={estimate.stars}
           />
-          <p className="text-ink2 text-note">
-            About this, for planets of <MassRange definition={setting.definition} /> at{' '}
-            <AxisRange definition={setting.definition} />. From the maps of {run?.analysis.key}, run{' '}
-            {run?.number}
-            {missing.length > 0 &&
-              `; ${listNames(missing.map((survey) => survey.name))} did not take part in it`}
-            . The run itself may differ where maps are newer.
+          {about(setting.definition)}
+        </>
+      ) : isPending && known && run && !needsRun && surveys.length > 0 ? (
+        <>
+          <p className="sr-only" aria-live="polite">
+            Fetching the maps of the newest run.
           </p>
+          <EstimateFacts credibleLevel={known.credibleLevel} />
+          {about(known.definition)}
         </>
       ) : (
         <p className="text-ink2 text-note" aria-live="polite">
@@ -79,7 +87,7 @@ export function Estimate(props: EstimateProps) {
             needsRun,
             refusal,
             hasRun: run !== null,
-            isLoading: isLoading || engine === undefined,
+            isLoading: isPending,
             error: error === undefined ? undefined : sentenceOf(error),
             isUnconstrained: estimate !== null,
             hasSurveys: surveys.length > 0,
@@ -87,6 +95,35 @@ export function Estimate(props: EstimateProps) {
         </p>
       )}
     </section>
+  );
+}
+
+interface EstimateFactsProps {
+  credibleLevel: number;
+  /** The rest is left out while it is being computed: its place is kept. */
+  detections?: string;
+  limit?: string;
+  exposure?: string;
+  stars?: number;
+}
+
+function EstimateFacts({ credibleLevel, detections, limit, exposure, stars }: EstimateFactsProps) {
+  return (
+    <FactsStrip
+      facts={[
+        {
+          name: `${describeLevel(credibleLevel)}, ${detections ?? 'being computed'}`,
+          value: limit ?? '\u2026',
+          isBound: true,
+        },
+        {
+          name: 'sum of detection probabilities',
+          help: 'exposure',
+          value: exposure ?? '\u2026',
+          note: stars === undefined ? undefined : `of ${stars}`,
+        },
+      ]}
+    />
   );
 }
 

@@ -186,6 +186,11 @@ export function NewAnalysis(props: NewAnalysisProps) {
               stored !== undefined ||
               (population !== undefined && !isPlainPowerLaw(population.definition))
             }
+            expected={
+              checked === undefined && population && isPlainPowerLaw(population.definition)
+                ? { definition: population.definition, credibleLevel: rate.credibleLevel }
+                : undefined
+            }
             setting={
               sampleId === undefined &&
               stored === undefined &&

@@ -32,7 +32,7 @@ export function SampleChoice({ collaboration, surveyIds, chosen, onChange }: Sam
         value={chosen ?? ''}
         onChange={(event) => onChange(event.target.value || undefined)}
         error={error && sentenceOf(error)}
-        hint={`${sample ? `${sample.words}. ` : ''}${preview ? countWords(preview) : ''}`}
+        hint={`${sample ? `${sample.words}. ` : ''}${preview ? countWords(preview) : surveyIds.length > 0 ? 'Counting the stars.' : ''}`}
         aside={<Link href={`/${collaboration}/stars/samples`}>Samples</Link>}
         options={[
           { value: '', label: 'All that are not chosen for a known companion' },
