@@ -1,10 +1,10 @@
+'use client';
+
 import { StateMark } from '@/components/ui/state-mark';
+import { useMoment } from '@/components/ui/time-zone';
 import { formatAsymmetric, formatPlain } from '@/lib/quantities/display';
 import type { VerdictView } from '@/lib/schemas/candidates';
 import { originWords, statusMarks, statusWords } from './status-words';
-
-const dayOf = (moment: string) =>
-  new Date(moment).toLocaleString('en-GB', { dateStyle: 'medium', timeZone: 'UTC' });
 
 /** A value with its errors where there are any: "8.2 +2.9 −2.2 AU". */
 export function withErrors(value: number, errors: [number, number] | null, unit: string): string {
@@ -29,6 +29,7 @@ export function placeWords(verdict: VerdictView): string {
 
 /** Every verdict and proposal, newest first: who, when, why, on what. */
 export function VerdictHistory({ history }: { history: VerdictView[] }) {
+  const moment = useMoment();
   if (history.length === 0) return <p className="py-2 text-ink3">Nobody has decided yet.</p>;
   return (
     <ol>
@@ -43,7 +44,7 @@ export function VerdictHistory({ history }: { history: VerdictView[] }) {
                 `, ${formatPlain(verdict.probability)}`}
             </StateMark>
             <span className="text-ink3">
-              {verdict.by ?? 'somebody who left'}, {dayOf(verdict.at)}
+              {verdict.by ?? 'somebody who left'}, {moment(verdict.at, 'day')}
               {verdict.file !== null && `, ${verdict.file}`}
             </span>
           </div>

@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { useDay } from '@/components/ui/time-zone';
 import { formatLimit, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure } from './chart-figure';
@@ -37,6 +38,7 @@ const margin = { left: 44, right: 56, top: 48, bottom: 34 };
  * Runs are spaced evenly, in their order: several of one day would lie on each other on a clock.
  */
 export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStaircaseProps) {
+  const day = useDay();
   const [measure, width] = useWidth<HTMLDivElement>(820);
   const [at, setAt] = useState<ReadPlace>();
   const last = steps.at(-1);
@@ -88,7 +90,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
           at={at}
           onAt={setAt}
           label="Read the limit run by run"
-          say={({ column }) => sayStep(steps[column], quantity)}
+          say={({ column }) => sayStep(steps[column], quantity, day)}
         />
       }
       tables={() => [
@@ -98,7 +100,7 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
           rows: steps.map((step) => [
             String(step.run),
             step.change,
-            new Date(step.at).toISOString().slice(0, 10),
+            day(step.at),
             formatLimit(step.limit, quantity),
             step.limitWithZero === undefined ? '–' : formatLimit(step.limitWithZero, quantity),
           ]),
@@ -173,11 +175,15 @@ export function HistoryStaircase({ steps, quantity, height = 296 }: HistoryStair
   );
 }
 
-function sayStep(step: HistoryStep, quantity: RateQuantity): string[] {
+function sayStep(
+  step: HistoryStep,
+  quantity: RateQuantity,
+  day: (moment: number) => string,
+): string[] {
   return [
     `${formatLimit(step.limit, quantity)}, run ${step.run}`,
     step.change,
-    new Date(step.at).toISOString().slice(0, 10),
+    day(step.at),
     ...(step.limitWithZero === undefined
       ? []
       : [`${formatLimit(step.limitWithZero, quantity)} with zero detections`]),

@@ -6,10 +6,10 @@ import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { ChangedMeanwhile } from '@/components/hooks/change';
 import { sharePopulation } from '@/components/hooks/use-populations';
-import { formatDay } from '@/components/runs/time-words';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 
 /** Every version with who made it and what rests on it; none of them ever changes. */
@@ -22,6 +22,7 @@ export function VersionList({
   versions: ListedPopulation[];
   shown: ListedPopulation;
 }) {
+  const day = useDay();
   const router = useRouter();
   const [problem, setProblem] = useState<string>();
   const share = async () => {
@@ -66,7 +67,7 @@ export function VersionList({
                 </Link>
               )}
               <span className="text-ink3">
-                {[version.createdBy, formatDay(version.createdAt)].filter(Boolean).join(', ')}
+                {[version.createdBy, day(version.createdAt)].filter(Boolean).join(', ')}
               </span>
             </span>
             <span className="block text-ink2">

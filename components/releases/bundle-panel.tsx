@@ -4,11 +4,11 @@ import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { sendBundle, useImports } from '@/components/hooks/use-releases';
-import { formatDay } from '@/components/runs/time-words';
 import { FileDrop } from '@/components/ui/file-drop';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
+import { useDay } from '@/components/ui/time-zone';
 import type { BundleImportView } from '@/lib/schemas/bundles';
 
 const MOST_BYTES = 256 * 2 ** 20;
@@ -40,6 +40,7 @@ export function BundlePanel({
   initial: BundleImportView[];
   canBring: boolean;
 }) {
+  const day = useDay();
   const { data: imports = initial, mutate } = useImports(collaboration, initial);
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<string>();
@@ -91,7 +92,7 @@ export function BundlePanel({
               from {one.title}
             </p>
             <p className="text-ink3">
-              {one.importedBy ?? 'a former member'}, {formatDay(one.createdAt)}
+              {one.importedBy ?? 'a former member'}, {day(one.createdAt)}
             </p>
             <Agreement one={one} />
           </li>

@@ -8,8 +8,8 @@ import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { type StateKind, StateMark } from '@/components/ui/state-mark';
+import { useDay } from '@/components/ui/time-zone';
 import type { DepositView } from '@/lib/schemas/deposits';
-import { longDay } from './release-words';
 
 const marks: Record<DepositView['state'], { kind: StateKind; words: string }> = {
   none: { kind: 'waiting', words: 'Not sent' },
@@ -51,6 +51,7 @@ export function DepositPart({
   release: { id: string; key: string };
   initial: DepositView;
 }) {
+  const day = useDay();
   const { data: view = initial, mutate } = useDeposit(collaboration, release.id, initial);
   const [isAsking, setAsking] = useState(false);
   const [isBusy, setBusy] = useState(false);
@@ -94,7 +95,7 @@ export function DepositPart({
         <Identifier view={view} />
         {view.publishedAt !== null && view.askedBy !== null && (
           <p>
-            Sent by {view.askedBy}, {longDay(view.publishedAt)}
+            Sent by {view.askedBy}, {day(view.publishedAt)}
             {view.address !== null && (
               <>
                 : <a href={view.address}>its page there</a>

@@ -12,10 +12,11 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAreaField } from '@/components/ui/text-area-field';
+import { useDay } from '@/components/ui/time-zone';
 import type { FreezeStanding, GuestLinkView } from '@/lib/schemas/releases';
 import { GiveLink } from './give-link';
 import { GuestLinks } from './guest-links';
-import { longDay, shortDigest } from './release-words';
+import { shortDigest } from './release-words';
 
 interface FreezeScreenProps {
   collaboration: string;
@@ -28,6 +29,7 @@ interface FreezeScreenProps {
 
 /** What freezing means, its checks, the reason where one is asked for, and what may follow. */
 export function FreezeScreen(props: FreezeScreenProps) {
+  const day = useDay();
   const { collaboration, initial, sentence, conditions, canRelease, links } = props;
   const [standing, setStanding] = useState(initial);
   const [reason, setReason] = useState('');
@@ -87,7 +89,7 @@ export function FreezeScreen(props: FreezeScreenProps) {
             {frozen ? (
               <>
                 <p className="text-ink2">
-                  Frozen by {frozen.by} on {longDay(frozen.at)}, with its inputs (fingerprint{' '}
+                  Frozen by {frozen.by} on {day(frozen.at)}, with its inputs (fingerprint{' '}
                   <span title={frozen.sha256}>{shortDigest(frozen.sha256)}</span>). It cannot
                   change.
                 </p>

@@ -3,18 +3,18 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { revokeGuestLink, useGuestLinks } from '@/components/hooks/use-releases';
-import { formatDay } from '@/components/runs/time-words';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import type { GuestLinkView } from '@/lib/schemas/releases';
 
-const standing = (link: GuestLinkView) =>
+const standing = (link: GuestLinkView, day: (moment: string) => string) =>
   link.revokedAt !== null
     ? 'ended by hand'
     : link.isOpen
-      ? `open until ${formatDay(link.expiresAt)}`
-      : `ended on ${formatDay(link.expiresAt)}`;
+      ? `open until ${day(link.expiresAt)}`
+      : `ended on ${day(link.expiresAt)}`;
 
 /** Private links, when each was last used, and what its holder wrote. */
 export function GuestLinks({
@@ -29,6 +29,7 @@ export function GuestLinks({
   /** Only those that open this: "R-4". */
   opens?: string;
 }) {
+  const day = useDay();
   const { data = initial, mutate } = useGuestLinks(collaboration, initial);
   const [problem, setProblem] = useState<string>();
   const links = opens === undefined ? data : data.filter((link) => link.opens === opens);
@@ -71,16 +72,14 @@ export function GuestLinks({
                 )}
               </div>
               <p className="text-ink3">
-                …{link.ending}, {standing(link)};{' '}
-                {link.lastUsedAt === null
-                  ? 'not used yet'
-                  : `last used ${formatDay(link.lastUsedAt)}`}
+                …{link.ending}, {standing(link, day)};{' '}
+                {link.lastUsedAt === null ? 'not used yet' : `last used ${day(link.lastUsedAt)}`}
                 {link.createdBy !== null && `; given by ${link.createdBy}`}
               </p>
               {link.notes.map((note) => (
                 <blockquote key={note.id} className="mt-2 border-rule2 border-l-2 pl-3">
                   <p className="text-ink3">
-                    {note.name} (guest), {formatDay(note.createdAt)}
+                    {note.name} (guest), {day(note.createdAt)}
                   </p>
                   <p className="whitespace-pre-wrap">{note.body}</p>
                 </blockquote>

@@ -2,8 +2,8 @@ import type { ReactNode } from 'react';
 import type { ReleaseStep } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
 import { type StateKind, StateMark } from '@/components/ui/state-mark';
+import { useDay } from '@/components/ui/time-zone';
 import type { ReleaseView } from '@/lib/schemas/releases';
-import { longDay } from './release-words';
 
 interface StepsProps {
   release: ReleaseView;
@@ -34,6 +34,7 @@ function Step({
 }
 
 function CheckStep({ release, busy, onStep }: StepsProps) {
+  const day = useDay();
   const { state, verification, job, can } = release;
   const again = can.change && (state === 'mismatch' || state === 'failed') && (
     <Button size="small" onClick={() => onStep('check')} isBusy={busy === 'check'}>
@@ -44,7 +45,7 @@ function CheckStep({ release, busy, onStep }: StepsProps) {
     const toTheBit = verification.runs.every(({ isSameDigest }) => isSameDigest);
     return (
       <Step kind="ok" title="Run again from its inputs">
-        {longDay(verification.checkedAt)}: every number is the same to {verification.digits} digits
+        {day(verification.checkedAt)}: every number is the same to {verification.digits} digits
         {toTheBit && ', and to the last bit'}.
       </Step>
     );
@@ -103,6 +104,7 @@ function TakenStep({
   whyNot: string | null | undefined;
   kind?: StateKind;
 }) {
+  const day = useDay();
   return (
     <Step
       kind={taken ? kind : 'waiting'}
@@ -120,7 +122,7 @@ function TakenStep({
         )
       }
     >
-      {taken ? `${taken.by}, ${longDay(taken.at)}` : whyNot}
+      {taken ? `${taken.by}, ${day(taken.at)}` : whyNot}
     </Step>
   );
 }

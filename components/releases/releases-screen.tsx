@@ -1,13 +1,13 @@
 'use client';
 
 import Link from 'next/link';
-import { formatDay } from '@/components/runs/time-words';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { useDay } from '@/components/ui/time-zone';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { BundleImportView } from '@/lib/schemas/bundles';
@@ -70,6 +70,7 @@ function ReleaseTable({
   collaboration: string;
   releases: ReleaseView[];
 }) {
+  const day = useDay();
   return (
     <Table caption="Releases, the newest first">
       <TableHead>
@@ -109,7 +110,7 @@ function ReleaseTable({
                 <StateMark kind={kind}>{words}</StateMark>
               </Cell>
               <Cell className="whitespace-nowrap">
-                {formatDay(release.published?.at ?? release.createdAt)}
+                {day(release.published?.at ?? release.createdAt)}
               </Cell>
             </Row>
           );

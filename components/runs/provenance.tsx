@@ -2,9 +2,10 @@ import { memo } from 'react';
 import { FoldSection } from '@/components/ui/fold-section';
 import { FormulaWords } from '@/components/ui/formula-words';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
+import { useDay } from '@/components/ui/time-zone';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import type { RunResult, RunView } from '@/lib/schemas/runs';
-import { durationOf, fingerprint, formatDay } from './time-words';
+import { durationOf, fingerprint } from './time-words';
 
 interface ProvenanceSectionProps {
   collaboration: string;
@@ -17,7 +18,7 @@ interface ProvenanceSectionProps {
 /** Everything that a run's number was made from, a step each. */
 export const ProvenanceSection = memo(function ProvenanceSection(props: ProvenanceSectionProps) {
   const { collaboration, run, result, isLive = false } = props;
-  const steps = provenanceSteps(collaboration, run);
+  const steps = provenanceSteps(collaboration, run, useDay());
   return (
     <FoldSection
       number={6}
@@ -36,7 +37,11 @@ export const ProvenanceSection = memo(function ProvenanceSection(props: Provenan
   );
 });
 
-function provenanceSteps(collaboration: string, run: RunView): ProvenanceStep[] {
+function provenanceSteps(
+  collaboration: string,
+  run: RunView,
+  day: (moment: string) => string,
+): ProvenanceStep[] {
   const { inputs, result } = run;
   if (!inputs) return [];
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
@@ -86,7 +91,7 @@ function provenanceSteps(collaboration: string, run: RunView): ProvenanceStep[] 
       what: `${run.analysis.key}, run ${run.number}`,
       by: [
         run.createdBy,
-        run.finishedAt ? formatDay(run.finishedAt) : undefined,
+        run.finishedAt ? day(run.finishedAt) : undefined,
         took,
         `engine ${run.engineVersion}`,
       ]

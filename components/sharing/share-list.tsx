@@ -9,6 +9,7 @@ import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import type { ShareView } from '@/lib/schemas/sharing';
 import { holdsWords, scopeWords, stateWords } from './share-words';
 import { WithdrawShareDialog } from './withdraw-share-dialog';
@@ -62,7 +63,7 @@ export function ShareList({ collaboration, shares, onChanged }: ShareListProps) 
                 <p className="whitespace-pre-line break-words text-ink3 text-note">{share.note}</p>
               )}
               <p className="mt-1 text-note">
-                <StateMark kind={stateWords(share).kind}>{stateWords(share).words}</StateMark>
+                <ShareState share={share} />
               </p>
             </div>
             <div className="flex flex-wrap items-center gap-x-4 gap-y-2 self-start">
@@ -133,4 +134,9 @@ function ShareName({ collaboration, share }: { collaboration: string; share: Sha
       {name} from {other}
     </>
   );
+}
+
+function ShareState({ share }: { share: ShareView }) {
+  const { kind, words } = stateWords(share, useDay());
+  return <StateMark kind={kind}>{words}</StateMark>;
 }

@@ -1,14 +1,6 @@
 import type { StateKind } from '@/components/ui/state-mark';
 import type { ShareView } from '@/lib/schemas/sharing';
 
-export const dayOf = (moment: string): string =>
-  new Date(moment).toLocaleDateString('en-GB', {
-    day: 'numeric',
-    month: 'long',
-    year: 'numeric',
-    timeZone: 'UTC',
-  });
-
 export const scopeWords = { whole: 'the whole survey', maps: 'its maps only' } as const;
 
 /** The code in groups of four, as it is read out. */
@@ -26,8 +18,11 @@ export function holdsWords({ holds, scope }: Pick<ShareView, 'holds' | 'scope'>)
   return parts.join(', ');
 }
 
-/** Where an offer stands, as a mark and as words. */
-export function stateWords(share: ShareView): { kind: StateKind; words: string } {
+/** Where an offer stands, as a mark and as words; `dayOf` writes the day of a moment. */
+export function stateWords(
+  share: ShareView,
+  dayOf: (moment: string) => string,
+): { kind: StateKind; words: string } {
   const { state, expiresAt, decidedBy, decidedAt, decidedWhy, withdrawnFrom, withdrawnWhy } = share;
   const by = decidedBy === null ? '' : ` by ${decidedBy}`;
   const on = decidedAt === null ? '' : ` on ${dayOf(decidedAt)}`;

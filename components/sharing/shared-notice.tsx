@@ -5,8 +5,9 @@ import { sentenceOf } from '@/components/hooks/api-problem';
 import { refreshShare } from '@/components/hooks/use-sharing';
 import { Notice } from '@/components/ui/notice';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import type { SharedFrom } from '@/lib/schemas/sharing';
-import { dayOf, scopeWords } from './share-words';
+import { scopeWords } from './share-words';
 
 /** Whose survey this is, how results name it, and whether it may still be used. */
 export function SharedNotice({
@@ -20,6 +21,7 @@ export function SharedNotice({
   shared: SharedFrom;
   onRefreshed(): void;
 }) {
+  const day = useDay();
   const [isBusy, setBusy] = useState(false);
   const [refusal, setRefusal] = useState<string | null>(null);
   const { owner, scope, attribution, copiedAt, version, withdrawnFrom, withdrawnWhy } = shared;
@@ -38,8 +40,8 @@ export function SharedNotice({
   return (
     <div className="my-3 grid gap-2">
       <Notice tone="neutral" title={`Shared by ${owner}, read only.`}>
-        Copy of {scopeWords[scope]} of {dayOf(copiedAt)}, version {version.slice(0, 8)}. Results
-        that use it say: “{attribution}”
+        Copy of {scopeWords[scope]} of {day(copiedAt)}, version {version.slice(0, 8)}. Results that
+        use it say: “{attribution}”
         {scope === 'maps' &&
           '. Its curves, files and ages stay with the owner, so adopted ages do not reach these maps.'}
       </Notice>
@@ -48,8 +50,8 @@ export function SharedNotice({
           tone={shared.isWithdrawn ? 'bad' : 'warn'}
           title={
             shared.isWithdrawn
-              ? `Withdrawn on ${dayOf(withdrawnFrom)}.`
-              : `${owner} takes ${name} back on ${dayOf(withdrawnFrom)}.`
+              ? `Withdrawn on ${day(withdrawnFrom)}.`
+              : `${owner} takes ${name} back on ${day(withdrawnFrom)}.`
           }
         >
           Reason: {withdrawnWhy}. Runs that were made stand; nothing new may use it

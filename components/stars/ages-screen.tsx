@@ -5,6 +5,7 @@ import { useRouter } from 'next/navigation';
 import { useConflicts } from '@/components/hooks/use-adoption';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { useDay } from '@/components/ui/time-zone';
 import type { AgeValue, DistanceValue, StarList, ValueTableView } from '@/lib/schemas/stars';
 import { AdoptSeveral } from './adopt-several';
 import { StarTabs } from './star-tabs';
@@ -78,6 +79,7 @@ function Conflicts(props: AgesScreenProps & { index: 0 | 1 }) {
 
 /** Where surveys disagree, and the numbered tables of what was adopted. */
 export function AgesScreen(props: AgesScreenProps) {
+  const day = useDay();
   const { collaboration, tables } = props;
   return (
     <>
@@ -120,7 +122,7 @@ export function AgesScreen(props: AgesScreenProps) {
                     <Cell>{change.source}</Cell>
                     <Cell>{table.why}</Cell>
                     <Cell className="whitespace-nowrap">
-                      {table.createdBy ?? 'somebody who left'}, {table.createdAt.slice(0, 10)}
+                      {table.createdBy ?? 'somebody who left'}, {day(table.createdAt)}
                     </Cell>
                     <Cell isNumeric>{table.stars}</Cell>
                   </Row>

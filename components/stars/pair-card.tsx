@@ -7,6 +7,7 @@ import type { Verdict } from '@/components/hooks/use-stars';
 import { Button } from '@/components/ui/button';
 import { SeriesKey } from '@/components/ui/series-key';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import { formatPlace, formatPlain } from '@/lib/quantities/display';
 import type { StarMatchView } from '@/lib/schemas/stars';
 import { ReasonDialog } from './reason-dialog';
@@ -72,6 +73,7 @@ function Side({ collaboration, star }: { collaboration: string; star: StarMatchV
 
 /** Two stars side by side, what speaks for one, and the decision. */
 export function PairCard({ collaboration, pair, canDecide, onDecide }: PairCardProps) {
+  const day = useDay();
   const [asked, setAsked] = useState<Verdict | null>(null);
   const isDecided = pair.state === 'confirmed' || pair.state === 'refused';
   const question = asked && questions[asked];
@@ -90,7 +92,7 @@ export function PairCard({ collaboration, pair, canDecide, onDecide }: PairCardP
           <p className="text-ink3 text-note">
             {isDecided ? stateWords[pair.state] : 'decision taken back'} by{' '}
             {pair.decidedBy ?? 'somebody who left'}
-            {pair.decidedAt && `, ${pair.decidedAt.slice(0, 10)}`}: {pair.why}
+            {pair.decidedAt && `, ${day(pair.decidedAt)}`}: {pair.why}
           </p>
         )}
         {canDecide && (

@@ -1,8 +1,9 @@
-import { fingerprint, formatDay } from '@/components/runs/time-words';
+import { fingerprint } from '@/components/runs/time-words';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Conditions, conditionRow } from '@/components/ui/plate';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { SectionOpener } from '@/components/ui/section-opener';
+import { useDay } from '@/components/ui/time-zone';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { AskedRun } from './kind-entry';
 
@@ -48,6 +49,7 @@ export function AnswerProvenance({
   study: StudyView;
 }) {
   const { inputs, run } = study;
+  const day = useDay();
   const steps: ProvenanceStep[] = [
     {
       kind: 'Run',
@@ -59,7 +61,7 @@ export function AnswerProvenance({
     {
       kind: 'Question',
       what: `question ${study.number}`,
-      by: `${study.createdBy ?? 'a former member'}, ${formatDay(study.createdAt)}`,
+      by: `${study.createdBy ?? 'a former member'}, ${day(study.createdAt)}`,
       fingerprint: study.inputsDigest ? fingerprint(study.inputsDigest) : undefined,
     },
     ...(inputs && inputs.further.length > 0
@@ -76,7 +78,7 @@ export function AnswerProvenance({
       : []),
     {
       kind: 'Answer',
-      what: study.finishedAt ? formatDay(study.finishedAt) : 'not finished',
+      what: study.finishedAt ? day(study.finishedAt) : 'not finished',
       by: `engine ${study.engineVersion}, seed ${study.seed}`,
       fingerprint: study.resultDigest ? fingerprint(study.resultDigest) : undefined,
     },

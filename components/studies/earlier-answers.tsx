@@ -1,7 +1,7 @@
-import { formatDay } from '@/components/runs/time-words';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
+import { useDay } from '@/components/ui/time-zone';
 import type { StudySummary } from '@/lib/schemas/studies';
 
 interface EarlierAnswersProps {
@@ -13,6 +13,7 @@ interface EarlierAnswersProps {
 
 /** All answers to one kind of question, newest first; a press shows another one. */
 export function EarlierAnswers({ studies, shownId, settingsInWords, onShow }: EarlierAnswersProps) {
+  const day = useDay();
   return (
     <Table caption="Questions of this kind that were asked, newest first">
       <TableHead>
@@ -42,7 +43,7 @@ export function EarlierAnswers({ studies, shownId, settingsInWords, onShow }: Ea
               <AnswerState study={study} />
             </Cell>
             <Cell className="whitespace-nowrap">
-              {study.createdBy ?? 'a former member'}, {formatDay(study.createdAt)}
+              {study.createdBy ?? 'a former member'}, {day(study.createdAt)}
             </Cell>
             <Cell className="whitespace-nowrap">run {study.run.number}</Cell>
           </Row>

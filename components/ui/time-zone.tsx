@@ -11,21 +11,28 @@ export function TimeZoneProvider({ zone, children }: { zone: string; children: R
 
 export const useTimeZone = () => useContext(TimeZone);
 
-export type MomentForm = 'time' | 'day' | 'full' | 'clock';
+export type MomentForm = 'time' | 'day' | 'date' | 'full' | 'clock';
 
 const forms: Record<MomentForm, Intl.DateTimeFormatOptions> = {
   time: { day: 'numeric', month: 'short', hour: '2-digit', minute: '2-digit' },
   day: { day: 'numeric', month: 'short', year: 'numeric' },
+  date: { day: 'numeric', month: 'long', year: 'numeric' },
   full: { day: 'numeric', month: 'short', year: 'numeric', hour: '2-digit', minute: '2-digit' },
   clock: { hour: '2-digit', minute: '2-digit' },
 };
 
 /** Writes moments in the collaboration's time zone. */
-export function useMoment(): (moment: string, form?: MomentForm) => string {
+export function useMoment(): (moment: string | number, form?: MomentForm) => string {
   const timeZone = useTimeZone();
   return useCallback(
     (moment, form = 'time') =>
       new Date(moment).toLocaleString('en-GB', { ...forms[form], timeZone }),
     [timeZone],
   );
+}
+
+/** Writes the day of a moment there: "2 February 2026". */
+export function useDay(): (moment: string | number) => string {
+  const moment = useMoment();
+  return useCallback((at) => moment(at, 'date'), [moment]);
 }

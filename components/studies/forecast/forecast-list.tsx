@@ -3,13 +3,13 @@
 import Link from 'next/link';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudiesOfKind } from '@/components/hooks/use-studies';
-import { formatDay } from '@/components/runs/time-words';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { useDay } from '@/components/ui/time-zone';
 import type { StudySummary } from '@/lib/schemas/studies';
 import { AnswerState } from '../earlier-answers';
 import { plannedInWords } from './forecast-words';
@@ -79,6 +79,7 @@ function ForecastTable({
   collaboration: string;
   studies: StudySummary[];
 }) {
+  const day = useDay();
   return (
     <Table caption="Forecasts, newest first">
       <TableHead>
@@ -111,7 +112,7 @@ function ForecastTable({
                 <AnswerState study={study} />
               </Cell>
               <Cell className="whitespace-nowrap">
-                {study.createdBy ?? 'a former member'}, {formatDay(study.createdAt)}
+                {study.createdBy ?? 'a former member'}, {day(study.createdAt)}
               </Cell>
             </Row>
           ),

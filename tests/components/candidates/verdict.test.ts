@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { axisSentence, massSentence } from '@/components/candidates/estimates';
 import { readVerdict, VerdictForm } from '@/components/candidates/verdict-form';
 import { placeWords, VerdictHistory } from '@/components/candidates/verdict-history';
+import { TimeZoneProvider } from '@/components/ui/time-zone';
 import { giveVerdictSchema, type MassEstimate, type VerdictView } from '@/lib/schemas/candidates';
 import { buildCandidate } from './build-candidate';
 
@@ -83,6 +84,20 @@ describe('the history', () => {
     expect(markup.indexOf('companion')).toBeLessThan(markup.indexOf('proposed: '));
     expect(markup).toContain('R. Castellan, 5 Mar 2026');
     expect(markup).toContain('three epochs move with the star');
+  });
+
+  it('names the day of the time zone that the collaboration chose', () => {
+    const late = { ...verdict, at: '2026-03-05T22:30:00Z' };
+    const dayIn = (zone: string) =>
+      renderToStaticMarkup(
+        createElement(TimeZoneProvider, {
+          zone,
+          // biome-ignore lint/correctness/noChildrenProp: it is required, and there is no JSX here
+          children: createElement(VerdictHistory, { history: [late] }),
+        }),
+      );
+    expect(dayIn('America/Lima')).toContain('R. Castellan, 5 Mar 2026');
+    expect(dayIn('Asia/Tokyo')).toContain('R. Castellan, 6 Mar 2026');
   });
 
   it('says how mass and axis came about', () => {
