@@ -48,13 +48,17 @@ export function readStarMaps(
       detail: `The maps arrived with ${bytes.byteLength} bytes, expected ${expected}. Reload the page to fetch them again.`,
     });
   }
-  const view = new DataView(bytes);
-  const values = new Uint16Array(bytes.byteLength / 2);
-  for (let i = 0; i < values.length; i++) values[i] = view.getUint16(2 * i, true);
   return {
     massMjup: Float64Array.from(grid.massMjup),
     semiMajorAxisAu: Float64Array.from(grid.semiMajorAxisAu),
     stars,
-    values,
+    values: littleEndian(bytes),
   };
+}
+
+/** The bytes themselves where the machine has the order of the wire, as nearly all have. */
+function littleEndian(bytes: ArrayBuffer): Uint16Array {
+  const values = new Uint16Array(bytes);
+  if (new Uint8Array(Uint16Array.of(1).buffer)[0] === 1) return values;
+  return values.map((value) => (value >> 8) | ((value & 0xff) << 8));
 }

@@ -5,7 +5,6 @@ import {
   type Likelihood,
   type PopulationView,
   upperLimit,
-  viewPopulation,
 } from '@/lib/inference';
 import {
   fromLogIndex,
@@ -17,8 +16,9 @@ import {
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { askedOf } from './live-answer';
 import type { LiveSample } from './live-sample';
-import { type LiveSetting, withLikelihood } from './live-setting';
-import { otherAxis, viewContracted } from './live-views';
+import { type LiveSetting, withInputs, withLikelihood } from './live-setting';
+import { sampleUnder } from './live-stacks';
+import { LiveViews, otherAxis, viewContracted } from './live-views';
 import { orNull } from './or-null';
 import { TRACK, trackOf } from './tracks';
 
@@ -54,6 +54,8 @@ export interface SwitchConsequences {
   candidates: Record<CandidateChoice, number | undefined>;
   likelihood: Record<Likelihood, number | undefined>;
   prior: Partial<Record<PriorLaw, number | undefined>>;
+  /** By model, of those that the sample has maps for. */
+  cooling: Record<string, number | undefined>;
 }
 
 export type CandidateChoice = NonNullable<LiveSetting['candidates']>['treatment'] | 'none';
@@ -81,7 +83,7 @@ export function switchConsequences(
   setting: LiveSetting,
   saved: LiveSetting,
   laws: PriorLaw[],
-): SwitchConsequences {
+): Omit<SwitchConsequences, 'cooling'> {
   const limit = (changed: LiveSetting) =>
     orNull(() => answerFromView(view, askedOf(sample, changed)).limit) ?? undefined;
   const followed = rateDependent(setting, saved);
@@ -115,6 +117,8 @@ export interface Consequences {
   semiMajorAxisIndex: Trace;
   /** Against the level [fraction]. */
   level: Trace;
+  /** Against the shift of all ages [sigma of each]; null without maps of other ages. */
+  age: Trace | null;
   switches: SwitchConsequences;
 }
 
@@ -133,7 +137,8 @@ export function* consequencesInSteps(
   setting: LiveSetting,
   saved: LiveSetting,
 ): Steps<Consequences | null> {
-  const view = orNull(() => viewPopulation(sample.maps, sample.grid, setting.definition));
+  const views = viewsOf(sample);
+  const view = orNull(() => views.of(setting.definition, setting));
   if (view === null) return null;
   const levels = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
   const laws = lawsOffered(setting, saved);
@@ -143,8 +148,57 @@ export function* consequencesInSteps(
     massIndex: yield* linearTrackInSteps(sample, setting, saved, 'massIndex'),
     semiMajorAxisIndex: yield* linearTrackInSteps(sample, setting, saved, 'semiMajorAxisIndex'),
     level: traceLevel(sample, view, setting, spread(levels, LEVEL_STEPS)),
-    switches,
+    age: yield* ageTrackInSteps(sample, setting),
+    switches: { ...switches, cooling: yield* coolingInSteps(sample, setting) },
   };
+}
+
+const keptViews = new WeakMap<LiveSample, LiveViews>();
+
+/** Views of a sample that keep what the setting before had in common with the next. */
+function viewsOf(sample: LiveSample): LiveViews {
+  const views = keptViews.get(sample) ?? new LiveViews(sample);
+  keptViews.set(sample, views);
+  return views;
+}
+
+const limitUnder = (sample: LiveSample, setting: LiveSetting) =>
+  orNull(
+    () =>
+      answerFromView(viewsOf(sample).of(setting.definition, setting), askedOf(sample, setting))
+        .limit,
+  );
+
+/** Places on the track between two stored shifts. */
+const PER_SHIFT = 4;
+
+/** The limit against the shift of all ages, NaN where there are no maps. */
+function* ageTrackInSteps(sample: LiveSample, setting: LiveSetting): Steps<Trace | null> {
+  const { ageShifts = [] } = sample.further ?? {};
+  if (ageShifts.length === 0) return null;
+  const [from, to] = [ageShifts[0], ageShifts[ageShifts.length - 1]];
+  const values = spread([from, to], PER_SHIFT * (ageShifts.length - 1));
+  const others = { ...setting, ageShift: undefined };
+  return yield* keptTrackInSteps(sample, 'ageShift', others, values, function* () {
+    const limits: number[] = [];
+    for (const ageShift of values) {
+      yield;
+      limits.push(limitUnder(sample, withInputs(setting, { ageShift })) ?? Number.NaN);
+    }
+    return limits;
+  });
+}
+
+function* coolingInSteps(
+  sample: LiveSample,
+  setting: LiveSetting,
+): Steps<SwitchConsequences['cooling']> {
+  const limits: SwitchConsequences['cooling'] = {};
+  for (const model of sample.further?.models ?? []) {
+    yield;
+    limits[model] = limitUnder(sample, withInputs(setting, { cooling: model })) ?? undefined;
+  }
+  return limits;
 }
 
 /** All steps at once. */
@@ -157,8 +211,28 @@ export function finishSteps<Answer>(steps: Steps<Answer>): Answer {
 
 type IndexField = 'massIndex' | 'semiMajorAxisIndex';
 
-/** The last track of each index: it stays the same while its own control is moved. */
-const lastTracks = new WeakMap<LiveSample, Map<IndexField, { key: string; track: Trace }>>();
+/** The last track of a control: it stays the same while its own control is moved. */
+const lastTracks = new WeakMap<
+  LiveSample,
+  Map<IndexField | 'ageShift', { key: string; track: Trace }>
+>();
+
+/** @param others the setting without what the control moves */
+function* keptTrackInSteps(
+  sample: LiveSample,
+  control: IndexField | 'ageShift',
+  others: object,
+  values: number[],
+  limitsInSteps: () => Steps<number[]>,
+): Steps<Trace> {
+  const key = JSON.stringify([others, values]);
+  const kept = lastTracks.get(sample) ?? new Map();
+  const last = kept.get(control);
+  if (last?.key === key) return last.track;
+  const track = { values, limits: yield* limitsInSteps() };
+  lastTracks.set(sample, kept.set(control, { key, track }));
+  return track;
+}
 
 /** The track of an index between its ends, both in the linear convention. */
 export function* linearTrackInSteps(
@@ -170,14 +244,9 @@ export function* linearTrackInSteps(
   const linear = (of: LiveSetting) => fromLogIndex(of.definition[field], 'linear');
   const values = spread(trackOf(TRACK[field], linear(setting), linear(saved)));
   const others = { ...setting, definition: { ...setting.definition, [field]: undefined } };
-  const key = JSON.stringify([others, values]);
-  const kept = lastTracks.get(sample) ?? new Map();
-  const last = kept.get(field);
-  if (last?.key === key) return last.track;
-  const limits = yield* limitsAgainstIndex(sample, setting, field, values);
-  const track = { values, limits };
-  lastTracks.set(sample, kept.set(field, { key, track }));
-  return track;
+  return yield* keptTrackInSteps(sample, field, others, values, () =>
+    limitsAgainstIndex(sample, setting, field, values),
+  );
 }
 
 /** NaN where there is none; only the moving axis is weighed anew. */
@@ -188,10 +257,11 @@ function* limitsAgainstIndex(
   linearIndices: number[],
 ): Steps<number[]> {
   const { definition } = setting;
-  const { maps, grid } = sample;
+  const { grid } = sample;
   const asked = askedOf(sample, setting);
   const weights = orNull(() => populationWeights(grid, definition));
-  if (weights === null) return linearIndices.map(() => Number.NaN);
+  const maps = orNull(() => sampleUnder(sample, setting).maps);
+  if (weights === null || maps === null) return linearIndices.map(() => Number.NaN);
   const moving: MovingAxis = field === 'massIndex' ? 'mass' : 'semiMajorAxis';
   const contracted = contractStillAxis(maps, grid, moving, weights[otherAxis[moving]]);
   const limits: number[] = [];

@@ -1,8 +1,10 @@
 import type { RatePrior } from '@/lib/inference';
 import { toLogIndex } from '@/lib/population';
 import { analysisRecipeSchema, ratePriorSchema } from '@/lib/schemas/analyses';
+import { idSchema } from '@/lib/schemas/common';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import { type LiveSetting, type Query, tidy, withLikelihood } from './live-setting';
+import { AGE_SHIFTS, COOLING_BUILT_IN } from '@/lib/schemas/stack-choices';
+import { type LiveSetting, type Query, tidy, withInputs, withLikelihood } from './live-setting';
 
 /**
  * Reads a setting from an address; a part that cannot be read keeps the saved value. The server
@@ -16,7 +18,7 @@ export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting 
       : saved;
   const candidates = candidatesFromText(query.cand, saved.candidates);
   const { candidates: _saved, ...rest } = asked;
-  return {
+  const setting: LiveSetting = {
     ...rest,
     ...(candidates && { candidates }),
     definition: definitionFromQuery(query, saved.definition),
@@ -24,6 +26,17 @@ export function settingFromQuery(query: Query, saved: LiveSetting): LiveSetting 
     detections: query.det === 'none' || query.det === 'counted' ? query.det : saved.detections,
     prior: priorFromText(query.prior) ?? asked.prior,
   };
+  return withInputs(setting, { ageShift: readShift(query.age), cooling: readModel(query.cooling) });
+}
+
+function readShift(text: string | undefined): number | undefined {
+  const shift = Number(text ?? '');
+  const isStored = shift >= AGE_SHIFTS[0] && shift <= AGE_SHIFTS[AGE_SHIFTS.length - 1];
+  return isStored ? tidy(shift) : undefined;
+}
+
+function readModel(text: string | undefined): string | undefined {
+  return text === COOLING_BUILT_IN || idSchema.safeParse(text).success ? text : undefined;
 }
 
 function definitionFromQuery(query: Query, saved: PowerLawDefinition): PowerLawDefinition {

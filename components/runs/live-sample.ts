@@ -1,7 +1,11 @@
+import type { FetchedStack } from '@/components/hooks/use-ages-cooling';
 import type { StarMaps } from '@/components/hooks/use-run-maps';
 import type { Detection, OpenCandidate } from '@/lib/inference';
 import type { RunInputs } from '@/lib/schemas/runs';
+import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
+import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
+import type { FurtherMaps } from './live-stacks';
 
 /** What a run was made from, as the live controls need it. */
 export interface LiveSample {
@@ -9,18 +13,39 @@ export interface LiveSample {
   stars: RunInputs['stars'];
   /** Shape [star, mass, semi-major axis], completeness times 65535. */
   maps: Uint16Array;
+  /** The same under other ages and cooling models, where a run's answer keeps some. */
+  further?: FurtherMaps;
   /** Confirmed companions of these stars, inside the ranges or not. */
   companions: Detection[];
   /** Candidates without an answer, inside the ranges or not. */
   open: OpenCandidate[];
 }
 
-export function sampleOf(inputs: RunInputs, maps: StarMaps): LiveSample {
+/** Stored stacks beside the run's own maps, in the order of an answer about ages and cooling. */
+export function furtherOf(
+  { result }: AgesCoolingAnswer,
+  maps: StarMaps,
+  stacks: readonly FetchedStack[],
+): FurtherMaps {
+  const { ageShifts, models } = result;
+  const find = (cooling: string, age: number) =>
+    cooling === COOLING_AS_RUN && age === 0
+      ? maps.values
+      : stacks.find((one) => one.cooling === cooling && one.age === age)?.maps;
+  return {
+    ageShifts,
+    models: models.map(({ model }) => model),
+    stacks: models.map(({ model }) => ageShifts.map((age) => find(model, age))),
+  };
+}
+
+export function sampleOf(inputs: RunInputs, maps: StarMaps, further?: FurtherMaps): LiveSample {
   const indexOf = new Map(inputs.stars.map((star, index) => [star.starId, index]));
   return {
     grid: { massMjup: maps.massMjup, semiMajorAxisAu: maps.semiMajorAxisAu },
     stars: inputs.stars,
     maps: maps.values,
+    ...(further && { further }),
     companions: inputs.companions.flatMap(({ starId, name, massMjup, semiMajorAxisAu }) => {
       const star = indexOf.get(starId);
       return star === undefined ? [] : [{ star, name, massMjup, semiMajorAxisAu }];

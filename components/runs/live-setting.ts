@@ -3,6 +3,8 @@ import type { RatePrior, RateQuantity } from '@/lib/inference';
 import { fromLogIndex } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
+import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
+import type { Under } from './live-stacks';
 
 /** Everything that follows a control at once, without a run. */
 export interface LiveSetting {
@@ -15,6 +17,10 @@ export interface LiveSetting {
   candidates?: AnalysisRecipe['candidates'];
   /** Expected number of false detections among those counted; mean number only. */
   background?: number;
+  /** Every star moved by so many sigma of its own age; left out: none. */
+  ageShift?: number;
+  /** Another cooling model than the run's. */
+  cooling?: string;
 }
 
 export function quantityOf(likelihood: LiveSetting['likelihood']): RateQuantity {
@@ -55,6 +61,21 @@ export function withLikelihood(
   };
 }
 
+/** Ages and cooling as they are named: what equals the run's own is left out. */
+export function withInputs(setting: LiveSetting, under: Under): LiveSetting {
+  const { ageShift: _shift, cooling: _model, ...rest } = setting;
+  const { ageShift = 0, cooling = COOLING_AS_RUN } = {
+    ageShift: setting.ageShift,
+    cooling: setting.cooling,
+    ...under,
+  };
+  return {
+    ...rest,
+    ...(ageShift !== 0 && { ageShift }),
+    ...(cooling !== COOLING_AS_RUN && { cooling }),
+  };
+}
+
 export function isSameSetting(one: LiveSetting, other: LiveSetting): boolean {
   return (
     isSameDefinition(one.definition, other.definition) &&
@@ -63,6 +84,8 @@ export function isSameSetting(one: LiveSetting, other: LiveSetting): boolean {
     one.likelihood === other.likelihood &&
     candidatesToText(one.candidates) === candidatesToText(other.candidates) &&
     one.background === other.background &&
+    one.ageShift === other.ageShift &&
+    one.cooling === other.cooling &&
     priorToText(one.prior) === priorToText(other.prior)
   );
 }
@@ -100,6 +123,8 @@ export function settingToQuery(setting: LiveSetting, saved: LiveSetting): Record
   if (priorToText(setting.prior) !== priorToText(saved.prior)) {
     query.prior = priorToText(setting.prior);
   }
+  if (setting.ageShift !== saved.ageShift) query.age = String(tidy(setting.ageShift ?? 0));
+  if (setting.cooling !== saved.cooling) query.cooling = setting.cooling ?? COOLING_AS_RUN;
   return query;
 }
 

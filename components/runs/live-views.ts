@@ -12,7 +12,9 @@ import {
   weightsWhileMoving,
 } from '@/lib/population';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
+import type { MapGrid } from '@/lib/sensitivity';
 import type { LiveSample } from './live-sample';
+import { stacksUnder, type Under } from './live-stacks';
 
 const fieldsAlong = {
   mass: ['massMinMjup', 'massMaxMjup', 'massIndex'],
@@ -33,38 +35,82 @@ interface Held {
 }
 
 /**
- * Views of one sample under populations that change step by step, as under a hand.
- *
- * While a control moves one axis alone, the maps are summed over the still axis once, and each
- * position costs one row a star instead of the whole map.
+ * Views of one sample under populations that change step by step, as under a hand, and under the ages
+ * and cooling models for which it has maps.
  */
 export class LiveViews {
-  private last: PowerLawDefinition | undefined;
-  private held: Held | undefined;
+  private readonly stacks = new Map<Uint16Array, StackViews>();
 
   constructor(private readonly sample: LiveSample) {}
 
   /**
-   * @returns the same as `viewPopulation` on the whole maps, up to the order of the sums
-   * @throws RangeError where the population lies outside the maps
+   * @returns the same as `viewPopulation` on the whole maps, up to the order of the sums; between two
+   *   stored shifts of age the mean of both, weighted
+   * @throws RangeError where the population lies outside the maps, or there are none
    */
+  of(definition: PowerLawDefinition, under: Under = {}): PopulationView {
+    const parts = stacksUnder(this.sample, under).map(({ maps, share }) => ({
+      share,
+      view: this.stackOf(maps).of(definition),
+    }));
+    return parts.length === 1 ? parts[0].view : weighViews(parts);
+  }
+
+  private stackOf(maps: Uint16Array): StackViews {
+    const known = this.stacks.get(maps) ?? new StackViews(maps, this.sample.grid);
+    this.stacks.set(maps, known);
+    return known;
+  }
+}
+
+/** A mean over the population is linear in the map, so views may be weighed in place of maps. */
+function weighViews(parts: { share: number; view: PopulationView }[]): PopulationView {
+  const [{ view: first }] = parts;
+  const perStar = new Float64Array(first.stars);
+  for (const { share, view } of parts) {
+    view.completenessPerStar?.forEach((seen, star) => {
+      perStar[star] += share * seen;
+    });
+  }
+  const exposure = perStar.reduce((sum, seen) => sum + seen, 0);
+  return { ...first, completenessPerStar: perStar, exposure };
+}
+
+/**
+ * Views of one stack of maps.
+ *
+ * While a control moves one axis alone, the maps are summed over the still axis once, and each
+ * position costs one row a star instead of the whole map. A population that stands still costs nothing.
+ */
+class StackViews {
+  private last: { definition: PowerLawDefinition; view: PopulationView } | undefined;
+  private held: Held | undefined;
+
+  constructor(
+    private readonly maps: Uint16Array,
+    private readonly grid: MapGrid,
+  ) {}
+
   of(definition: PowerLawDefinition): PopulationView {
+    if (this.last && isSameAlongBoth(this.last.definition, definition)) return this.last.view;
+    const view = this.look(definition);
+    this.last = { definition, view };
+    return view;
+  }
+
+  private look(definition: PowerLawDefinition): PopulationView {
     const moving = this.movingAxis(definition);
-    this.last = definition;
-    if (moving === undefined) {
-      return viewPopulation(this.sample.maps, this.sample.grid, definition);
-    }
+    if (moving === undefined) return viewPopulation(this.maps, this.grid, definition);
     const { weights, contracted } = this.hold(definition, moving);
-    const moved = weightsWhileMoving(this.sample.grid, definition, moving, weights);
+    const moved = weightsWhileMoving(this.grid, definition, moving, weights);
     return viewContracted(contracted, moved, definition);
   }
 
   /** The axis that alone differs from the population before; undefined at first and otherwise. */
   private movingAxis(definition: PowerLawDefinition): MovingAxis | undefined {
-    const { last, held } = this;
-    if (last === undefined) return undefined;
-    const isStill = (axis: MovingAxis) => keyAlong(last, axis) === keyAlong(definition, axis);
-    if (isStill('mass') && isStill('semiMajorAxis')) return held?.axis;
+    if (this.last === undefined) return undefined;
+    const before = this.last.definition;
+    const isStill = (axis: MovingAxis) => keyAlong(before, axis) === keyAlong(definition, axis);
     if (isStill('semiMajorAxis')) return 'mass';
     return isStill('mass') ? 'semiMajorAxis' : undefined;
   }
@@ -73,14 +119,18 @@ export class LiveViews {
     const still = otherAxis[axis];
     const stillKey = keyAlong(definition, still);
     if (this.held?.axis !== axis || this.held.stillKey !== stillKey) {
-      const { maps, grid } = this.sample;
-      const weights = populationWeights(grid, definition);
-      const contracted = contractStillAxis(maps, grid, axis, weights[still]);
+      const weights = populationWeights(this.grid, definition);
+      const contracted = contractStillAxis(this.maps, this.grid, axis, weights[still]);
       this.held = { axis, stillKey, weights, contracted };
     }
     return this.held;
   }
 }
+
+const isSameAlongBoth = (one: PowerLawDefinition, other: PowerLawDefinition) =>
+  (['mass', 'semiMajorAxis'] as const).every(
+    (axis) => keyAlong(one, axis) === keyAlong(other, axis),
+  );
 
 /** A view from maps that are summed over the axis that stands still. */
 export function viewContracted(

@@ -14,6 +14,7 @@ import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { ExportMenu } from './export-menu';
 import type { LiveSetting } from './live-setting';
+import { isAsRun } from './live-stacks';
 import { recipeWords } from './recipe-words';
 import { copyAndRun, recipeOf, saveAndRun } from './save-setting';
 
@@ -36,6 +37,8 @@ interface ResultActionsProps extends KeptActionsProps {
 }
 
 const WAIT = 'A run is on its way: wait for it or stop it first.';
+const WHAT_IF =
+  'Other ages and cooling models are looked at here and recorded with their own question. To make a run of them, adopt ages under Stars or give the surveys the cooling model.';
 const mayChange = ({ can }: AnalysisView) => can.change && can.run;
 const nextNumber = ({ runs }: AnalysisView) => (runs[0]?.number ?? 0) + 1;
 
@@ -93,6 +96,7 @@ function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
   const isFoot = props.placement === 'foot';
   const { work, perform, dialog } = useWork(collaboration, onSaved);
   const isOwn = mayChange(analysis);
+  const whatIf = isAsRun(setting) ? undefined : WHAT_IF;
   const next = nextNumber(analysis);
   // Drawn from the first change on: this recipe is the one that the change began from.
   const editing = useEditing(analysis.recipe);
@@ -116,6 +120,7 @@ function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
           variant={isOwn ? 'normal' : 'primary'}
           onClick={saveCopy}
           isBusy={work === 'copy'}
+          disabledReason={whatIf}
         >
           Save as copy
         </Button>
@@ -126,7 +131,7 @@ function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
           className={isFoot ? '' : 'max-md:hidden'}
           onClick={save}
           isBusy={work === 'save'}
-          disabledReason={isBusy ? WAIT : undefined}
+          disabledReason={whatIf ?? (isBusy ? WAIT : undefined)}
         >
           {isFoot ? `Run ${next}` : `Save as run ${next}`}
         </Button>

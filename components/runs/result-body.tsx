@@ -13,6 +13,7 @@ import {
 import type { PosteriorView } from '@/components/charts/posterior-chart';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAgesCooling } from '@/components/hooks/use-ages-cooling';
 import { useCalm } from '@/components/hooks/use-calm';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
@@ -25,9 +26,12 @@ import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
+import { AgesCoolingOffer } from './ages-cooling-offer';
 import { ChecksStrip } from './checks-strip';
-import { type LiveSample, sampleOf } from './live-sample';
+import { furtherOf, type LiveSample, sampleOf } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
+import { isAsRun } from './live-stacks';
 import { posteriorData } from './posterior-data';
 import { ProvenanceSection } from './provenance';
 import { conditionRows, ResultStatement } from './result-statement';
@@ -60,6 +64,10 @@ interface ResultBodyProps {
   inRun: LiveSetting;
   setting: LiveSetting;
   isUnsaved: boolean;
+  /** The run's answer about ages and cooling, as the page brought it along. */
+  agesCooling: AgesCoolingAnswer | null;
+  /** Whether this person may ask the run further questions. */
+  canAsk: boolean;
   /** Repeated at the foot of a narrow screen. */
   footActions: ReactNode;
   onSetting(setting: LiveSetting): void;
@@ -69,13 +77,22 @@ interface ResultBodyProps {
 export function ResultBody(props: ResultBodyProps) {
   const { collaboration, run, inputs, result, inRun, setting, isUnsaved, onSetting } = props;
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);
-  const sample = useMemo(() => maps && sampleOf(inputs, maps), [inputs, maps]);
-  const outcome = useLiveResult(sample, setting);
+  const others = useAgesCooling(collaboration, run, props.agesCooling, {
+    isReady: maps !== undefined,
+    wantsAll: !isAsRun(setting),
+  });
+  const sample = useMemo(() => {
+    const further = maps && others.answer && furtherOf(others.answer, maps, others.stacks);
+    return maps && sampleOf(inputs, maps, further ?? undefined);
+  }, [inputs, maps, others.answer, others.stacks]);
+  const isWaiting = !isAsRun(setting) && others.isFetching;
+  const outcome = useLiveResult(isWaiting ? undefined : sample, setting);
+  const models = others.answer?.result.models;
   const shown = useMemo(
-    () => showResult(inputs, result, inRun, setting, outcome),
-    [inputs, result, inRun, setting, outcome],
+    () => showResult(inputs, result, inRun, setting, outcome, models),
+    [inputs, result, inRun, setting, outcome, models],
   );
-  const { map, depth, profiles } = useMapFigures(result, inputs, sample, setting.definition);
+  const { map, depth, profiles } = useMapFigures(result, inputs, sample, setting);
   const onDefinition = useLatestDefinition(setting, onSetting);
   const followed = useMemo(
     () => ({ shown, depth, definition: setting.definition }),
@@ -129,8 +146,31 @@ export function ResultBody(props: ResultBodyProps) {
           profiles={profiles}
           candidates={inputs.undecided.length}
           countedLabel={insideCount === 1 ? '1 vetted' : `${insideCount} vetted`}
+          inputs={others.answer ?? undefined}
+          offer={
+            others.answer === null ? (
+              <AgesCoolingOffer
+                collaboration={collaboration}
+                run={run}
+                open={others.open}
+                canAsk={props.canAsk}
+                onAsked={others.refresh}
+              />
+            ) : undefined
+          }
           onSetting={onSetting}
         />
+        {others.error !== undefined && (
+          <p className="mt-2 text-note text-warn" role="status">
+            Maps for other ages and cooling models could not be fetched: {sentenceOf(others.error)}
+          </p>
+        )}
+        {maps && isWaiting && others.error === undefined && (
+          <p className="mt-2 text-ink3 text-note" role="status">
+            Fetching the maps for these ages and this cooling model; until then the numbers are
+            those of run {run.number}.
+          </p>
+        )}
         {!maps && error === undefined && (
           <p className="mt-2 text-ink3 text-note" role="status">
             Fetching the maps of {result.stars} stars; until then the numbers are those of run{' '}
@@ -249,7 +289,6 @@ const ResultPlate = memo(function ResultPlate({
             quantity,
             stars: result.stars,
             counted: shown.counted.map(({ name }) => name),
-            cooling: inputs.cooling,
           })}
           announced={announced}
           copy={

@@ -13,10 +13,13 @@ import { describeLevel, type RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
+import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
+import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
 import { CandidateSwitch } from './candidate-switch';
 import { type Consequences, lawsOffered, priorChosen } from './consequences';
-import { type LiveSetting, tidy, withLikelihood } from './live-setting';
+import { formatShift, modelLabel, shiftsOf } from './input-words';
+import { type LiveSetting, tidy, withInputs, withLikelihood } from './live-setting';
 import { TRACK, trackOf } from './tracks';
 
 interface ResultConsoleProps {
@@ -29,6 +32,10 @@ interface ResultConsoleProps {
   profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
   /** Candidates without an answer in the sample. */
   candidates: number;
+  /** Other ages and cooling models, where maps are kept for them. */
+  inputs?: AgesCoolingAnswer;
+  /** In the place of their controls, where none are. */
+  offer?: ReactNode;
   /** "2 vetted": what counting them means here. */
   countedLabel: string;
   onSetting(setting: LiveSetting): void;
@@ -81,10 +88,11 @@ export function ResultConsole(props: ResultConsoleProps) {
   };
   const [levelMin, levelMax] = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
   const laws = lawsOffered(setting, saved);
+  const models = props.inputs?.result.models ?? [];
 
   return (
     <Console
-      columns={5}
+      columns={props.inputs ? 6 : 5}
       foot={
         <>
           <ConsequenceSwitch
@@ -112,6 +120,21 @@ export function ResultConsole(props: ResultConsoleProps) {
                 saved={saved}
                 consequence={(choice) => consequence(consequences?.switches.candidates[choice])}
                 onSetting={onSetting}
+              />
+            </div>
+          )}
+          {models.length > 1 && (
+            <div className={`max-md:w-full ${further}`}>
+              <ConsequenceSwitch
+                label="Cooling model"
+                help="cooling-model"
+                value={setting.cooling ?? COOLING_AS_RUN}
+                onChange={(cooling) => onSetting(withInputs(setting, { cooling }))}
+                options={models.map((model) => ({
+                  value: model.model,
+                  label: <span title={model.name}>{modelLabel(model, models)}</span>,
+                  consequence: consequence(consequences?.switches.cooling[model.model]),
+                }))}
               />
             </div>
           )}
@@ -148,6 +171,9 @@ export function ResultConsole(props: ResultConsoleProps) {
               <FloorEntry setting={setting} onSetting={onSetting} />
             </div>
           )}
+          {props.offer !== undefined && (
+            <div className={`max-md:w-full ${further}`}>{props.offer}</div>
+          )}
           <p className="ml-auto max-w-[170px] text-right text-chart text-ink3 leading-[1.3] max-md:hidden">
             Each choice carries the limit it would give,{' '}
             {quantity === 'host_fraction' ? 'in %' : 'in planets per 100 stars'}
@@ -158,7 +184,7 @@ export function ResultConsole(props: ResultConsoleProps) {
             aria-expanded={isFull}
             onClick={() => setFull(!isFull)}
           >
-            {isFull ? 'Fewer controls' : '4 more controls'}
+            {isFull ? 'Fewer controls' : 'More controls'}
           </TextAction>
         </>
       }
@@ -213,6 +239,25 @@ export function ResultConsole(props: ResultConsoleProps) {
           ),
         })}
       </ControlCell>
+      {props.inputs && (
+        <ControlCell className={further}>
+          <TraceSlider
+            name="Age shift"
+            label="Age shift, all stars"
+            help="age-shift"
+            trace={consequences?.age ? asTrace(withoutGaps(consequences.age)) : undefined}
+            value={setting.ageShift ?? 0}
+            savedValue={saved.ageShift ?? 0}
+            {...shiftEnds(props.inputs, setting)}
+            step={0.1}
+            ticks={props.inputs.result.ageShifts}
+            onChange={(next) => onSetting(withInputs(setting, { ageShift: tidy(next, 3) }))}
+            formatLimit={limit}
+            formatValue={formatShift}
+            levelWords={levelWords}
+          />
+        </ControlCell>
+      )}
       <ControlCell className={further}>
         <TraceSlider
           name="Credible level"
@@ -284,6 +329,20 @@ function boundsOf(nodes: Float64Array, min: number, max: number): [number, numbe
 
 function asTrace({ values, limits }: { values: number[]; limits: number[] }) {
   return { parameter: Float64Array.from(values), limit: Float64Array.from(limits) };
+}
+
+/** The track ends where maps do. */
+function withoutGaps({ values, limits }: { values: number[]; limits: number[] }) {
+  const isThere = limits.map((limit) => Number.isFinite(limit));
+  return {
+    values: values.filter((_, i) => isThere[i]),
+    limits: limits.filter((_, i) => isThere[i]),
+  };
+}
+
+function shiftEnds(inputs: AgesCoolingAnswer, { cooling, ageShift = 0 }: LiveSetting) {
+  const [min, max] = shiftsOf(inputs, cooling);
+  return { min: Math.min(min, ageShift), max: Math.max(max, ageShift) };
 }
 
 function percent({ values, limits }: { values: number[]; limits: number[] }) {

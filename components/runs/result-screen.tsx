@@ -11,6 +11,7 @@ import type { AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunView } from '@/lib/schemas/runs';
+import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
 import { ResultActions } from './result-actions';
@@ -32,6 +33,8 @@ interface ResultScreenProps {
   runPopulation: ListedPopulation | null;
   /** What the address asks for; undefined where the population has no live controls. */
   asked: LiveSetting | undefined;
+  /** The run's answer about ages and cooling, where it has one. */
+  agesCooling: AgesCoolingAnswer | null;
 }
 
 /** An analysis: its newest result, and where its laws allow it, live under the controls. */
@@ -135,6 +138,8 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
           inRun={settingOfRun(run, definition) ?? inRecipe}
           setting={setting}
           isUnsaved={isUnsaved}
+          agesCooling={run.id === props.run?.id ? props.agesCooling : null}
+          canAsk={analysis.can.run}
           footActions={actions('foot')}
           onSetting={setMoved}
         />

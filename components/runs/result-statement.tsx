@@ -117,6 +117,8 @@ interface ConditionInputs {
   outside: string[];
   merged: string[];
   cooling: string;
+  /** What is done with them, where they are not the run's. */
+  ages: string | null;
   shareOutsideMaps: number;
   answer: LimitAnswer;
   atTenthOfFloor: number | null;
@@ -157,6 +159,7 @@ export function conditionRows(inputs: ConditionInputs): ConditionRow[] {
     });
   }
   rows.push({ name: 'Cooling', help: 'cooling-model', value: inputs.cooling });
+  if (inputs.ages) rows.push({ name: 'Ages', help: 'age-shift', value: inputs.ages });
   if (shareOutsideMaps > 0.0005) {
     rows.push({
       name: 'Outside',

@@ -50,11 +50,17 @@ function sampleWords({ surveys }: RunInputs, { stars }: RunResult): string {
 }
 
 /** The limit of a live setting with its conditions. */
-export function liveSentence({ answer, quantity, setting, counted }: ShownResult): string {
+export function liveSentence({
+  answer,
+  quantity,
+  setting,
+  counted,
+  ...shown
+}: ShownResult): string {
   const { definition, credibleLevel, prior } = setting;
   const ranges = `${formatRange(definition.massMinMjup, definition.massMaxMjup, 'MJ')}, ${formatRange(definition.semiMajorAxisMinAu, definition.semiMajorAxisMaxAu, 'AU')}`;
   const limit = answer.isConstrained
     ? `Upper limit ${formatLimit(answer.limit, quantity)} (${describeLevel(credibleLevel)})`
     : 'No limit';
-  return `${limit}: ${ranges}; ${describePrior(prior, quantity)}; ${describePopulation(definition)}; ${counted.length} detections counted.`;
+  return `${limit}: ${ranges}; ${describePrior(prior, quantity)}; ${describePopulation(definition)}; ${counted.length} detections counted; ${[shown.cooling, shown.ages].filter(Boolean).join('; ')}.`;
 }

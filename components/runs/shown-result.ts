@@ -1,7 +1,9 @@
 import type { RateQuantity, StatedCandidates } from '@/lib/inference';
 import { isInside } from '@/lib/population';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { Beside } from './beside-table';
+import { agesInWords, coolingInWords } from './input-words';
 import { type LimitAnswer, savedAnswer } from './limit-answer';
 import { isSameSetting, type LiveSetting, quantityOf } from './live-setting';
 import type { LiveOutcome } from './use-live-result';
@@ -26,6 +28,9 @@ export interface ShownResult {
   outside: string[];
   merged: string[];
   exposure: number;
+  /** The cooling model, and what is done with ages where they are not the run's. */
+  cooling: string;
+  ages: string | null;
   shareOutsideMaps: number;
   /** Shape [star]; undefined until the maps are there. */
   view: LiveOutcome['view'];
@@ -42,6 +47,7 @@ export function showResult(
   inRun: LiveSetting,
   setting: LiveSetting,
   outcome: LiveOutcome | undefined,
+  models?: AgesCoolingAnswer['result']['models'],
 ): ShownResult {
   const saved = { answer: savedAnswer(result.answer), quantity: quantityOf(inRun.likelihood) };
   const isLive = !isSameSetting(setting, inRun);
@@ -61,6 +67,8 @@ export function showResult(
       outside: result.outside.map(({ name }) => name),
       merged: result.mergedNames,
       exposure: result.exposure,
+      cooling: inputs.cooling,
+      ages: null,
       shareOutsideMaps: result.shareOutsideMaps,
       view: undefined,
       saved,
@@ -87,6 +95,8 @@ export function showResult(
       one.reason === 'star-already-counted' ? [one.detection.name] : [],
     ),
     exposure: full.exposure,
+    cooling: coolingInWords(inputs.cooling, setting, models),
+    ages: agesInWords(setting),
     shareOutsideMaps: full.shareOutsideMap,
     view: outcome.view,
     saved,

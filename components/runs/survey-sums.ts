@@ -24,6 +24,16 @@ export function sumBySurvey(sample: LiveSample, surveys: RunInputs['surveys']): 
   return sums;
 }
 
+/** The mean map of all stars, from the sums in which each star counts once. */
+export function meanOfSums(sums: SurveySum[], stars: number): Float64Array {
+  const mean = new Float64Array(sums[0]?.summed.length ?? 0);
+  for (const { summed } of sums)
+    summed.forEach((sum, node) => {
+      mean[node] += sum / stars;
+    });
+  return mean;
+}
+
 /** Depth of search of each survey against semi-major axis, averaged over the population's masses. */
 export function depthOf(sums: SurveySum[], weights: PopulationWeights): DepthSeries[] {
   const whole = weights.mass.reduce((sum, weight) => sum + weight, 0);

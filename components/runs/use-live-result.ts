@@ -25,8 +25,12 @@ export function useLiveResult(
   );
   useRehearsal(engine, sample, setting);
   const view = useMemo(
-    () => views && attempt(() => views.of(setting.definition)),
-    [views, setting.definition],
+    () =>
+      views &&
+      attempt(() =>
+        views.of(setting.definition, { ageShift: setting.ageShift, cooling: setting.cooling }),
+      ),
+    [views, setting.definition, setting.ageShift, setting.cooling],
   );
   return useMemo(() => {
     if (!sample || !engine || !view) return undefined;

@@ -3,12 +3,14 @@
 import { useMemo } from 'react';
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { MapData } from '@/components/charts/map-contours';
+import { useCalm } from '@/components/hooks/use-calm';
 import { populationWeights } from '@/lib/population';
-import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 import type { LiveSample } from './live-sample';
+import type { LiveSetting } from './live-setting';
+import { isAsRun, sampleUnder } from './live-stacks';
 import { orNull } from './or-null';
-import { depthOf, profileAlong, sumBySurvey } from './survey-sums';
+import { depthOf, meanOfSums, profileAlong, sumBySurvey } from './survey-sums';
 
 /** The mean map and the depth by survey, as a run stored them. */
 export function useStoredMap(result: RunResult, inputs: RunInputs) {
@@ -24,16 +26,34 @@ export function useStoredMap(result: RunResult, inputs: RunInputs) {
   return { map, depth };
 }
 
-/** The mean map of a run, and what follows from it for a population: depth and profiles. */
+/** How often maps between two stored ages follow a hand. */
+const PACE = { paceMs: 300 };
+
+/**
+ * The mean map of a run, and what follows from it for a population: depth and profiles; all of them
+ * under the setting's ages and cooling model, at a pace of their own.
+ */
 export function useMapFigures(
   result: RunResult,
   inputs: RunInputs,
   sample: LiveSample | undefined,
-  definition: PowerLawDefinition,
+  setting: LiveSetting,
 ) {
   const stored = useStoredMap(result, inputs);
-  const { map } = stored;
-  const sums = useMemo(() => sample && sumBySurvey(sample, inputs.surveys), [sample, inputs]);
+  const { definition, ageShift, cooling } = setting;
+  const under = useCalm(
+    useMemo(() => ({ ageShift, cooling }), [ageShift, cooling]),
+    PACE,
+  );
+  const moved = useMemo(() => sample && orNull(() => sampleUnder(sample, under)), [sample, under]);
+  const sums = useMemo(() => moved && sumBySurvey(moved, inputs.surveys), [moved, inputs]);
+  const map = useMemo(
+    () =>
+      sums && !isAsRun(under)
+        ? { ...stored.map, completeness: meanOfSums(sums, inputs.stars.length) }
+        : stored.map,
+    [sums, under, stored.map, inputs],
+  );
   const weights = useMemo(
     () => orNull(() => populationWeights(map, definition)),
     [map, definition],

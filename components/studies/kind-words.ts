@@ -16,6 +16,12 @@ export const kindWords: Record<StudyKind, KindWords> = {
     help: 'systematics',
     question: 'Which assumption would move the limit most if it were wrong?',
   },
+  'ages-cooling': {
+    title: 'Ages and cooling',
+    help: 'age-shift',
+    question:
+      'What if all stars were younger or older than adopted, or their planets had started hotter or colder?',
+  },
   influence: {
     title: 'Which stars carry the limit',
     help: 'influence',

@@ -1,5 +1,6 @@
 import dynamic from 'next/dynamic';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
+import { agesCoolingInWords } from './ages-cooling/ages-cooling-words';
 import { calibrationInWords } from './calibration/calibration-words';
 import { countsInWords } from './counts/counts-words';
 import { forecastInWords } from './forecast/forecast-words';
@@ -25,6 +26,14 @@ export const kinds: { [Kind in StudyKind]: KindEntry<Kind> } = {
     ),
     settingsInWords: systematicsInWords,
     loadTables: async () => (await import('./systematics/systematics-tables')).systematicsTables,
+  },
+  'ages-cooling': {
+    Form: dynamic(async () => (await import('./ages-cooling/ages-cooling-form')).AgesCoolingForm),
+    Answer: dynamic(
+      async () => (await import('./ages-cooling/ages-cooling-answer')).AgesCoolingAnswer,
+    ),
+    settingsInWords: agesCoolingInWords,
+    loadTables: async () => (await import('./ages-cooling/ages-cooling-tables')).agesCoolingTables,
   },
   influence: {
     Form: dynamic(async () => (await import('./influence/influence-form')).InfluenceForm),

@@ -5,6 +5,7 @@ import { type Actor, EVERY_SCOPE } from '@/lib/access/actor';
 import { hashPassword } from '@/lib/access/passwords';
 import { config } from '@/lib/config';
 import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
+import { nameStart } from '@/lib/services/cooling-relations';
 import { listCoolingTables } from '@/lib/services/cooling-tables';
 import { closeReaders } from '@/lib/services/reading';
 import { createSurvey, listSurveys } from '@/lib/services/surveys';
@@ -90,6 +91,23 @@ async function finishJob(jobId: string): Promise<void> {
   }
 }
 
+/** Invented, with the start that each follows; the surveys use the first. */
+const coolingModels = [
+  { file: 'hot-harbour.csv', title: 'Harbour, high-entropy start', shift: 0, start: 'hot' },
+  { file: 'warm-harbour.csv', title: 'Harbour, medium-entropy start', shift: 0.7, start: 'warm' },
+  { file: 'cold-harbour.csv', title: 'Harbour, low-entropy start', shift: 1.4, start: 'cold' },
+] as const;
+
+async function bringCooling(owner: Actor): Promise<void> {
+  for (const { file, title, shift } of coolingModels) {
+    await bringIn(owner, 'cooling-tables', file, coolingFile(shift), undefined, { title });
+  }
+  for (const { id, name } of await listCoolingTables(owner)) {
+    const model = coolingModels.find(({ title }) => title === name);
+    if (model) await nameStart(owner, id, { startCondition: model.start });
+  }
+}
+
 async function importSurvey(
   actor: Actor,
   survey: DemoSurvey,
@@ -97,7 +115,9 @@ async function importSurvey(
 ): Promise<string> {
   const own = stars.filter((star) => star.surveys.includes(survey.slug));
   const companions = companionsOf(survey, own);
-  const [table] = await listCoolingTables(actor);
+  const tables = await listCoolingTables(actor);
+  const table = tables.find(({ startCondition }) => startCondition === 'hot');
+  if (!table) throw new Error('no cooling table of the demonstration starts hot');
   const made = await createSurvey(actor, {
     name: survey.name,
     slug: survey.slug,
@@ -226,24 +246,7 @@ async function seedBreakwater(): Promise<void> {
     if (!actor) throw new Error(`nobody is called ${key}`);
     return actor;
   };
-  await bringIn(
-    actorOf('marrand'),
-    'cooling-tables',
-    'warm-harbour.csv',
-    coolingFile(0),
-    undefined,
-    {
-      title: 'Harbour, high-entropy start',
-    },
-  );
-  await bringIn(
-    actorOf('marrand'),
-    'cooling-tables',
-    'cold-harbour.csv',
-    coolingFile(1.4),
-    undefined,
-    { title: 'Harbour, low-entropy start' },
-  );
+  await bringCooling(actorOf('marrand'));
   const stars = drawSky();
   const ids: Record<string, string> = {};
   for (const survey of demoSurveys)

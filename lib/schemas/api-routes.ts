@@ -55,7 +55,13 @@ import { searchRoutes } from './search-routes';
 import { sharingRoutes } from './sharing-routes';
 import { starRoutes } from './star-routes';
 import { statementRoutes } from './statement-routes';
-import { createStudySchema, studyQuerySchema, studySchema, studySummarySchema } from './studies';
+import {
+  createStudySchema,
+  studyMapsQuerySchema,
+  studyQuerySchema,
+  studySchema,
+  studySummarySchema,
+} from './studies';
 import { surveyRoutes } from './survey-routes';
 
 import { talkRoutes } from './talk-routes';
@@ -225,6 +231,13 @@ const analyses: ApiRoute[] = [
   route('get', `${team}/studies/{study}`, 'read', 'A further question with its result', {
     answer: studySchema,
   }),
+  route(
+    'get',
+    `${team}/studies/{study}/maps`,
+    'read',
+    'Maps of the run under other ages or cooling: uint16, little-endian',
+    { query: studyMapsQuerySchema, files: bytes },
+  ),
   route('delete', `${team}/studies/{study}`, 'write', 'Delete a further question and its result'),
   route('get', `${team}/jobs`, 'read', 'Jobs, open ones first', {
     query: pageSchema,

@@ -1,7 +1,8 @@
 import { z } from 'zod';
 import { idSchema, moment, pageSchema } from './common';
 import { jobSchema } from './jobs';
-import { studyResultSchema } from './study-results';
+import { AGE_SHIFTS, COOLING_AS_RUN } from './stack-choices';
+import { type ResultOf, studyResultSchema } from './study-results';
 import { studyKindSchema, studySettingsSchema } from './study-settings';
 
 /** What a study's numbers were made from; its digest is the study's fingerprint. */
@@ -20,6 +21,18 @@ export const createStudySchema = studySettingsSchema;
 
 export const studyQuerySchema = pageSchema.extend({ kind: studyKindSchema.optional() });
 export type StudyQuery = z.infer<typeof studyQuerySchema>;
+
+/** Which maps of an answer about ages and cooling. */
+export const studyMapsQuerySchema = z.strictObject({
+  /** `as-run`, `built-in` or the id of a cooling table. */
+  cooling: z.string().max(100).default(COOLING_AS_RUN),
+  /** One of the stored shifts of age. */
+  age: z.coerce
+    .number()
+    .refine((shift) => AGE_SHIFTS.includes(shift), `one of ${AGE_SHIFTS.join(', ')}`)
+    .default(0),
+});
+export type StudyMapsQuery = z.infer<typeof studyMapsQuerySchema>;
 
 export const studySummarySchema = z.object({
   id: idSchema,
@@ -51,3 +64,9 @@ export const studySchema = studySummarySchema.extend({
   resultDigest: z.string().nullable(),
 });
 export type StudyView = z.infer<typeof studySchema>;
+
+/** A run's answer about ages and cooling, as its page needs it to move between the kept maps. */
+export interface AgesCoolingAnswer {
+  id: string;
+  result: ResultOf<'ages-cooling'>;
+}

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { idSchema } from './common';
+import { startConditionSchema } from './cooling';
 import { sweepParameterSchema, systematicChangeSchema } from './study-settings';
 
 const numbers = z.array(z.number());
@@ -86,6 +87,35 @@ export const systematicsResultSchema = z.object({
       fault: z.string().nullable(),
       /** Stars whose map the change cannot touch, such as uploaded ones. */
       starsUnchanged: z.number(),
+    }),
+  ),
+  notes: z.array(z.string()),
+});
+
+export const agesCoolingResultSchema = z.object({
+  kind: z.literal('ages-cooling'),
+  baseline: z.number(),
+  /** Of every star, in sigma of its own age. */
+  ageShifts: numbers,
+  /** The run's own first. */
+  models: z.array(
+    z.object({
+      /** `as-run`, `built-in` or the id of a cooling table. */
+      model: z.string(),
+      name: z.string(),
+      startCondition: startConditionSchema,
+      /** One for each age shift. */
+      shifts: z.array(
+        z.object({
+          limit: z.number().nullable(),
+          exposure: z.number().nullable(),
+          /** Why there are no maps, or no limit. */
+          fault: z.string().nullable(),
+          /** Whether maps for it are stored with this answer. */
+          hasMaps: z.boolean(),
+          starsUnchanged: z.number(),
+        }),
+      ),
     }),
   ),
   notes: z.array(z.string()),
@@ -259,6 +289,7 @@ export const studyResultSchema = z.discriminatedUnion('kind', [
   limitMapResultSchema,
   sweepResultSchema,
   systematicsResultSchema,
+  agesCoolingResultSchema,
   overlapRulesResultSchema,
   influenceResultSchema,
   comparisonResultSchema,

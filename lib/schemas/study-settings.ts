@@ -62,6 +62,16 @@ export const systematicsSettingsSchema = z.strictObject({
   changes: z.array(systematicChangeSchema).min(1).max(40).optional(),
 });
 
+export const agesCoolingSettingsSchema = z.strictObject({
+  kind: z.literal('ages-cooling'),
+  /** Cooling models beside the run's own, null for the built-in law; absent: up to two that fit. */
+  coolingTableIds: z
+    .array(idSchema.nullable())
+    .max(2, 'at most two')
+    .refine((ids) => new Set(ids).size === ids.length, 'each model once')
+    .optional(),
+});
+
 export const overlapRulesSettingsSchema = z.strictObject({ kind: z.literal('overlap-rules') });
 
 export const influenceSettingsSchema = z.strictObject({
@@ -143,6 +153,7 @@ export const studySettingsSchema = z.discriminatedUnion('kind', [
   limitMapSettingsSchema,
   sweepSettingsSchema,
   systematicsSettingsSchema,
+  agesCoolingSettingsSchema,
   overlapRulesSettingsSchema,
   influenceSettingsSchema,
   comparisonSettingsSchema,
@@ -155,6 +166,7 @@ export const studyKindSchema = z.enum([
   'limit-map',
   'sweep',
   'systematics',
+  'ages-cooling',
   'overlap-rules',
   'influence',
   'population-comparison',

@@ -5,15 +5,16 @@ import type { AgeLaw, ContrastCurve, StarInputs } from './types';
 
 /** One assumption about a star moved by one step, for a table of systematics. */
 export type StarChange =
-  | { kind: 'ages'; sigma: -1 | 1 }
+  | { kind: 'ages'; sigma: number }
   | { kind: 'distances'; sigma: -1 | 1 }
   | { kind: 'n-sigma'; step: -1 | 1 };
 
 /**
  * A star under a changed assumption; the spread of what is changed stays.
  *
- * - ages: median and bounds times t∓/t0, t∓ the law's 16 % or 84 % point; each law of a mixture by its
- *   own ratio. An age without spread stays.
+ * - ages: median and bounds times (t∓/t0)^|sigma|, t∓ the law's quoted 16 % or 84 % point, or to the
+ *   law's own quantile at sigma where none is quoted; each law of a mixture by its own ratio. An age
+ *   without spread stays.
  * - distances: nearer or farther by its error; a parallax larger or smaller by its own.
  * - n-sigma: every curve for the threshold n ± 1 of the same noise, hence brighter or fainter by
  *   2.5 log10((n ± 1)/n), not brighter than the star.
@@ -37,14 +38,17 @@ export function varyStar(star: StarInputs, change: StarChange): StarInputs {
   }
 }
 
-function shiftedAge(age: StarInputs['age'], sigma: -1 | 1): StarInputs['age'] {
+function shiftedAge(age: StarInputs['age'], sigma: number): StarInputs['age'] {
   if (!('mixture' in age)) return shiftedLaw(age, sigma);
   return { mixture: age.mixture.map((part) => ({ ...part, age: shiftedLaw(part.age, sigma) })) };
 }
 
-function shiftedLaw(law: AgeLaw, sigma: -1 | 1): AgeLaw {
+function shiftedLaw(law: AgeLaw, sigma: number): AgeLaw {
   const quoted = sigma < 0 ? law.lowerMyr : law.upperMyr;
-  const ratio = (quoted ?? ageQuantile(law)(normalCumulative(sigma))) / law.medianMyr;
+  const ratio =
+    quoted === undefined
+      ? ageQuantile(law)(normalCumulative(sigma)) / law.medianMyr
+      : (quoted / law.medianMyr) ** Math.abs(sigma);
   const moved = Object.entries(law).map(([name, value]) => [
     name,
     value === undefined ? undefined : value * ratio,

@@ -9,7 +9,7 @@ import { refuseUndecidedIn } from '@/lib/queue/undecided-pairs';
 import { refuseWithdrawn } from '@/lib/queue/withdrawn-surveys';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { idSchema } from '@/lib/schemas/common';
-import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import type { RunInputs, RunSummary, RunView } from '@/lib/schemas/runs';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
 import { AnalysisRow, database, inTransaction, JobRow, PopulationRow, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
@@ -186,7 +186,21 @@ export interface RunMaps {
 export async function getRunMaps(actor: Actor, id: string): Promise<RunMaps> {
   const run = await findRun(actor, id);
   if (!run.inputs || !run.inputsDigest) throw new NotFound('maps of an unfinished run');
-  const { stars, grid } = run.inputs;
+  const { stars } = run.inputs;
+  const keys = stars.map(({ mapId }) => mapId);
+  return { ...(await readStack(run.collaborationId, run.inputs, keys)), digest: run.inputsDigest };
+}
+
+/**
+ * Stored maps of a run's stars, one a star in its order, on its grid.
+ *
+ * @throws NotFound naming the star whose map is gone
+ */
+export async function readStack(
+  collaborationId: string,
+  { stars, grid }: Pick<RunInputs, 'stars' | 'grid'>,
+  mapIds: readonly string[],
+): Promise<Omit<RunMaps, 'digest'>> {
   const axes = {
     massMjup: Float64Array.from(grid.massMjup),
     semiMajorAxisAu: Float64Array.from(grid.semiMajorAxisAu),
@@ -194,14 +208,13 @@ export async function getRunMaps(actor: Actor, id: string): Promise<RunMaps> {
   const shape: RunMaps['shape'] = [stars.length, axes.massMjup.length, axes.semiMajorAxisAu.length];
   const size = shape[1] * shape[2];
   const values = new Uint16Array(stars.length * size);
-  const keys = stars.map(({ mapId }) => mapId);
   try {
-    await streamMaps(actor.collaborationId, { by: 'id', keys }, (map, place) => {
+    await streamMaps(collaborationId, { by: 'id', keys: mapIds }, (map, place) => {
       values.set(valuesOnGrid(map, axes), place * size);
     });
   } catch (error) {
     if (!(error instanceof MissingMap)) throw error;
-    throw new NotFound(`map of ${stars.find(({ mapId }) => mapId === error.key)?.name}`);
+    throw new NotFound(`map of ${stars[mapIds.indexOf(error.key)]?.name}`);
   }
-  return { bytes: ownBytes(values), shape, digest: run.inputsDigest };
+  return { bytes: ownBytes(values), shape };
 }

@@ -1,18 +1,33 @@
-import { Op, type Transaction, type WhereOptions } from 'sequelize';
+import { Op, QueryTypes, type Transaction, type WhereOptions } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, NotFound, TooMany } from '@/lib/errors';
 import { enqueueStudy } from '@/lib/queue/enqueue';
 import { idSchema } from '@/lib/schemas/common';
-import type { StudyQuery, StudySummary, StudyView } from '@/lib/schemas/studies';
+import { AGE_SHIFTS } from '@/lib/schemas/stack-choices';
+import type {
+  AgesCoolingAnswer,
+  StudyMapsQuery,
+  StudyQuery,
+  StudySummary,
+  StudyView,
+} from '@/lib/schemas/studies';
 import type { StudySettings } from '@/lib/schemas/study-settings';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
-import { AnalysisRow, inTransaction, JobRow, PersonRow, RunRow, StudyRow } from '@/models';
+import {
+  AnalysisRow,
+  database,
+  inTransaction,
+  JobRow,
+  PersonRow,
+  RunRow,
+  StudyRow,
+} from '@/models';
 import { digestOf } from '@/models/digest';
 import { recordAudit } from './audit';
 import { behindRow, type PageAsked } from './behind-row';
 import { describeJobs } from './jobs';
-import { findRun } from './runs';
+import { findRun, type RunMaps, readStack } from './runs';
 import { refuseUnanswerable } from './study-checks';
 import { studyNames } from './study-words';
 import { together } from './together';
@@ -156,6 +171,57 @@ export async function getStudy(actor: Actor, id: string): Promise<StudyView> {
     result: study.result,
     resultDigest: study.resultDigest,
   };
+}
+
+/** The newest answer of a run about ages and cooling; null while there is none. */
+export async function findAgesCooling(
+  actor: Actor,
+  runId: string,
+): Promise<AgesCoolingAnswer | null> {
+  demand(actor, 'read');
+  const study = await StudyRow.findOne({
+    attributes: ['id', 'result'],
+    where: {
+      ...{ runId, collaborationId: actor.collaborationId, kind: 'ages-cooling' },
+      result: { [Op.not]: null },
+    },
+    order: [['number', 'DESC']],
+  });
+  if (study?.result?.kind !== 'ages-cooling') return null;
+  return { id: study.id, result: study.result };
+}
+
+/**
+ * Maps of the run's stars under an age shift and a cooling model, kept with an answer about both.
+ *
+ * @throws NotFound for another kind of answer, and where such maps were not made
+ */
+export async function getStudyMaps(
+  actor: Actor,
+  id: string,
+  { cooling, age }: StudyMapsQuery,
+): Promise<RunMaps> {
+  const study = await findStudy(actor, id);
+  const { result, resultDigest } = study;
+  const model =
+    result?.kind === 'ages-cooling'
+      ? result.models.findIndex((one) => one.model === cooling)
+      : undefined;
+  if (model === undefined || resultDigest === null) throw new NotFound('maps of this question');
+  const stack = model * AGE_SHIFTS.length + AGE_SHIFTS.indexOf(age);
+  const rows = await database().query<{ mapId: string }>(
+    'select map_id as "mapId" from study_map where study_id = $1 and stack = $2 order by position',
+    { bind: [study.id, stack], type: QueryTypes.SELECT },
+  );
+  if (model < 0 || rows.length === 0) throw new NotFound('maps for this age and cooling model');
+  const { inputs } = await RunRow.findByPk(study.runId, {
+    attributes: ['inputs'],
+    rejectOnEmpty: true,
+  });
+  if (!inputs) throw new NotFound('run with its stars');
+  const mapIds = rows.map(({ mapId }) => mapId);
+  const maps = await readStack(actor.collaborationId, inputs, mapIds);
+  return { ...maps, digest: `${resultDigest}-${stack}` };
 }
 
 async function refuseCrowd(actor: Actor, transaction: Transaction): Promise<void> {

@@ -38,6 +38,19 @@ async function checkPopulations(
   if (unknown >= 0) refuse(item(unknown), 'There is no such population', 'choice-unknown');
 }
 
+/** The built-in law, null, is everybody's. */
+async function checkCoolingTable(
+  { collaborationId }: RunRow,
+  id: string | null,
+  item: string,
+  transaction: Transaction,
+): Promise<void> {
+  if (id === null) return;
+  const where = { id, collaborationId };
+  const table = await CoolingTableRow.findOne({ attributes: ['id'], where, transaction });
+  if (!table) refuse(item, 'There is no such cooling table', 'choice-unknown');
+}
+
 function isProper(prior: RatePriorInput, likelihood: string): boolean {
   if (prior.law === 'jeffreys') return likelihood === 'host-fraction' || prior.max !== undefined;
   return prior.law !== 'gamma' || prior.rate > 0;
@@ -82,14 +95,15 @@ const checks: { [Kind in StudyKind]?: Check<Kind> } = {
       if (change.change === 'combination' && !sharesStars(inputs)) {
         refuse(`changes.${i}`, 'No star of this run is in several surveys');
       }
-      if (change.change !== 'cooling' || change.coolingTableId === null) continue;
-      const table = await CoolingTableRow.findOne({
-        attributes: ['id'],
-        where: { id: change.coolingTableId, collaborationId: run.collaborationId },
-        transaction,
-      });
-      if (table) continue;
-      refuse(`changes.${i}.coolingTableId`, 'There is no such cooling table', 'choice-unknown');
+      if (change.change !== 'cooling') continue;
+      const item = `changes.${i}.coolingTableId`;
+      await checkCoolingTable(run, change.coolingTableId, item, transaction);
+    }
+  },
+
+  'ages-cooling': async ({ run, settings, transaction }) => {
+    for (const [i, coolingTableId] of (settings.coolingTableIds ?? []).entries()) {
+      await checkCoolingTable(run, coolingTableId, `coolingTableIds.${i}`, transaction);
     }
   },
 

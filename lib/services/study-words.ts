@@ -6,6 +6,7 @@ export const studyNames: Record<StudyKind, string> = {
   'limit-map': 'Limit map',
   sweep: 'Limit against a parameter',
   systematics: 'What moves the limit',
+  'ages-cooling': 'Ages and cooling',
   'overlap-rules': 'Overlaps',
   influence: 'Which stars carry the limit',
   'population-comparison': 'Populations compared',

@@ -1,4 +1,6 @@
+import type { Transaction } from 'sequelize';
 import { complete, hold, reportProgress } from '@/lib/queue/attempt';
+import { select } from '@/lib/queue/statement';
 import { type StudyInputs, studyInputsSchema } from '@/lib/schemas/studies';
 import { type StudyResult, studyResultSchema } from '@/lib/schemas/study-results';
 import type { StudyKind } from '@/lib/schemas/study-settings';
@@ -6,6 +8,7 @@ import { inTransaction, RunRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import type { Work } from '../perform';
 import { tellOfEnd } from '../run-mail';
+import { performAgesCooling } from './study-ages-cooling';
 import { performCalibration } from './study-calibration';
 import { performComparison } from './study-comparison';
 import { openStudy, type StudyPerformer, type StudyWork } from './study-context';
@@ -19,6 +22,7 @@ import { performSystematics } from './study-systematics';
 import { headlineOf } from './study-words';
 
 const studyKinds: { [Kind in StudyKind]: StudyPerformer<Kind> } = {
+  'ages-cooling': performAgesCooling,
   'free-indices': performFreeIndices,
   counts: performCounts,
   forecast: performForecast,
@@ -76,8 +80,28 @@ async function store(given: StudyWork, result: StudyResult): Promise<void> {
       },
       { transaction },
     );
+    await keepMaps(given, transaction);
     await reportProgress(work.attempt, 'store', 1, 1, transaction);
     await complete(transaction, work.attempt);
     await tellOfEnd(transaction, work.attempt.jobId, 'finished');
   });
+}
+
+async function keepMaps(given: StudyWork, transaction: Transaction): Promise<void> {
+  const { study, collaborationId, kept } = given;
+  for (const { stack, digests } of kept) {
+    const stored = await select(
+      `insert into study_map (study_id, stack, position, collaboration_id, map_id)
+       select $1, $2, (wanted.place - 1)::int, $3, m.id
+       from unnest(array(select jsonb_array_elements_text($4::jsonb))) with ordinality
+         as wanted(digest, place)
+       join completeness_map m on m.collaboration_id = $3 and m.digest = wanted.digest
+       returning position`,
+      [study.id, stack, collaborationId, JSON.stringify(digests)],
+      transaction,
+    );
+    if (stored.length !== digests.length) {
+      throw new Error(`${stored.length} of ${digests.length} maps of stack ${stack} are stored`);
+    }
+  }
 }

@@ -29,7 +29,9 @@ export function defaultChanges(
       { change: 'ages-old' },
       { change: 'distances-near' },
       { change: 'distances-far' },
-      ...coolingChanges(settings, computed, tables),
+      ...otherCoolingModels(sample, tables.slice(0, MOST_TABLES)).map(
+        (coolingTableId) => ({ change: 'cooling', coolingTableId }) as const,
+      ),
       { change: 'threshold' },
       { change: 'n-sigma-up' },
       { change: 'n-sigma-down' },
@@ -47,23 +49,30 @@ export function defaultChanges(
   return changes;
 }
 
-function coolingChanges(
-  settings: Sample['surveys'][number]['row']['mapSettings'][],
-  computed: Sample['stars'][number]['entries'],
+/**
+ * Cooling models that know every band of the sample's curves and that not all of its surveys use
+ * already: the built-in law, null, then tables in their order.
+ */
+export function otherCoolingModels(
+  { surveys, stars }: Sample,
   tables: CoolingTableRow[],
-): SystematicChange[] {
-  const bands = [...new Set(computed.flatMap(({ curves }) => curves.map(({ band }) => band)))];
+): (string | null)[] {
+  const bands = new Set(
+    stars
+      .flatMap(({ entries }) => entries)
+      .filter(({ map }) => map.origin === 'computed')
+      .flatMap(({ curves }) => curves.map(({ band }) => band)),
+  );
   const isUsed = (id: string | null) =>
-    settings.every(({ cooling }) =>
-      cooling.kind === 'table' ? cooling.coolingTableId === id : id === null,
+    surveys.every(({ row: { mapSettings } }) =>
+      mapSettings.cooling.kind === 'table'
+        ? mapSettings.cooling.coolingTableId === id
+        : id === null,
     );
-  const changes: SystematicChange[] = [];
-  if (!isUsed(null) && bands.every(hasBuiltInBand)) {
-    changes.push({ change: 'cooling', coolingTableId: null });
-  }
-  for (const { id, magnitudes } of tables.slice(0, MOST_TABLES)) {
-    if (isUsed(id) || !bands.every((band) => band in magnitudes)) continue;
-    changes.push({ change: 'cooling', coolingTableId: id });
-  }
-  return changes;
+  const fitting = tables.filter(({ magnitudes }) => [...bands].every((band) => band in magnitudes));
+  const models = [
+    ...([...bands].every(hasBuiltInBand) ? [null] : []),
+    ...fitting.map(({ id }) => id),
+  ];
+  return models.filter((id) => !isUsed(id));
 }

@@ -26,6 +26,8 @@ export interface StudyWork {
   question: RunQuestion;
   /** What was used beyond the run, for the study's inputs. */
   further: StudyInputs['further'];
+  /** Maps to be kept with the answer: a stack of one digest a star, under its number. */
+  kept: { stack: number; digests: readonly string[] }[];
   report(stage: string, done: number, total: number): Promise<void>;
   /** Runs one named part in a thread. */
   compute<Name extends keyof StudyTasks>(
@@ -88,6 +90,7 @@ export async function openStudy(work: Work): Promise<StudyWork> {
     grid,
     question: questionOf({ maps, grid, population, recipe, inputs }),
     further: [],
+    kept: [],
     report(stage, done, total) {
       signal.throwIfAborted();
       return reportProgress(attempt, stage, done, total);

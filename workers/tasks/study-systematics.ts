@@ -4,17 +4,17 @@ import type { SystematicChange } from '@/lib/schemas/study-settings';
 import { type StarChange, varyStar } from '@/lib/sensitivity/vary';
 import { CoolingTableRow } from '@/models';
 import { digestOf } from '@/models/digest';
-import { ThreadFault } from '../pool';
 import { combineMaps } from './run-maps';
 import type { Sample } from './run-sample';
-import { readMaps } from './stored-maps';
 import { defaultChanges } from './study-changes';
 import type { StudyPerformer, StudyWork } from './study-context';
 import { loadRunSample } from './study-sample';
+import { answerUnder } from './study-under';
 import {
   makeVariations,
   type PlannedVariation,
   planVariation,
+  underCooling,
   type Variation,
   type VariedMaps,
 } from './study-variation';
@@ -33,14 +33,8 @@ function variationOf(change: SystematicChange, name: string): Variation {
   const starChange = starChanges[change.change];
   if (starChange) return { name, star: (star) => varyStar(star, starChange) };
   switch (change.change) {
-    case 'cooling': {
-      const { coolingTableId } = change;
-      const cooling =
-        coolingTableId === null
-          ? ({ kind: 'built-in' } as const)
-          : ({ kind: 'table', coolingTableId } as const);
-      return { name, settings: (settings) => ({ ...settings, cooling }) };
-    }
+    case 'cooling':
+      return { name, settings: underCooling(change.coolingTableId) };
     case 'threshold':
       return {
         name,
@@ -92,7 +86,9 @@ export const performSystematics: StudyPerformer<'systematics'> = async (given, s
     await given.report('limits', i, changes.length);
     const plan = planned[i];
     const maps = 'rule' in plan ? await recombine(given, sample, plan) : made.get(plan);
-    rows.push({ change, label: labels[i], ...(await answerUnder(given, maps as VariedMaps)) });
+    const { limit, ...rest } = await answerUnder(given, maps as VariedMaps);
+    const ratio = limit === null ? null : limit / run.result.answer.limit;
+    rows.push({ change, label: labels[i], limit, ratio, ...rest });
   }
   await given.report('limits', changes.length, changes.length);
   return {
@@ -118,20 +114,6 @@ async function recombine(
   } catch (error) {
     if (!(error instanceof InputError)) throw error;
     return { digests: [], starsUnchanged: 0, fault: error.message };
-  }
-}
-
-async function answerUnder(given: StudyWork, { digests, starsUnchanged, fault }: VariedMaps) {
-  const none = { limit: null, ratio: null, exposure: null, starsUnchanged };
-  if (fault !== null) return { ...none, fault };
-  const maps = await readMaps(given.collaborationId, digests, given.grid);
-  try {
-    const { limit, exposure } = await given.compute('limit', { ...given.question, maps });
-    const ratio = limit / given.run.result.answer.limit;
-    return { limit, ratio, exposure, fault: null, starsUnchanged };
-  } catch (error) {
-    if (!(error instanceof ThreadFault)) throw error;
-    return { ...none, fault: error.message };
   }
 }
 

@@ -16,6 +16,14 @@ export interface Variation {
   settings?: (settings: MapSettings) => MapSettings;
 }
 
+/** Every survey under one cooling model; null: the built-in law. */
+export const underCooling =
+  (coolingTableId: string | null): Variation['settings'] =>
+  (settings) => ({
+    ...settings,
+    cooling: coolingTableId === null ? { kind: 'built-in' } : { kind: 'table', coolingTableId },
+  });
+
 export interface VariedMaps {
   /** One digest a star, in the run's order. */
   digests: string[];

@@ -98,6 +98,17 @@ const headlines: { [Kind in StudyKind]: Headline<Kind> } = {
     return `Most: ${label}, ${formatLimit(limit as number, quantity)}, ${times(ratio as number)} the run's`;
   },
 
+  'ages-cooling': ({ models, ageShifts }, { quantity }) => {
+    const limits = models.flatMap(({ shifts }) => shifts.flatMap(({ limit }) => limit ?? []));
+    if (limits.length === 0) return 'No age and no cooling model gave a limit';
+    const ends = [Math.min(...limits), Math.max(...limits)].map((one) =>
+      formatLimit(one, quantity),
+    );
+    const range = `${formatPlain(ageShifts[0])} to +${formatPlain(ageShifts[ageShifts.length - 1])}`;
+    const count = models.length === 1 ? '1 cooling model' : `${models.length} cooling models`;
+    return `From ${ends[0]} to ${ends[1]} over ages ${range} sigma and ${count}`;
+  },
+
   'overlap-rules': ({ shared, bracket }, { quantity }) => {
     const count = shared.length === 1 ? '1 shared star' : `${shared.length} shared stars`;
     const ends = [bracket.lowest, bracket.highest].map((limit) => formatLimit(limit, quantity));

@@ -6,6 +6,7 @@ import { startStudy } from '@/lib/services/studies';
 const referee: unknown[] = [
   { kind: 'influence' },
   { kind: 'systematics' },
+  { kind: 'ages-cooling' },
   { kind: 'calibration' },
   { kind: 'overlap-rules' },
   { kind: 'limit-map' },

@@ -12,6 +12,7 @@ import { NotFound } from '@/lib/errors';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import { getAnalysis } from '@/lib/services/analyses';
 import { findPopulationsById } from '@/lib/services/populations';
+import { findAgesCooling } from '@/lib/services/studies';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string }>;
@@ -34,6 +35,7 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
     ? settingFromQuery(await searchParams, settingOfRecipe(analysis.recipe, definition))
     : undefined;
   const populations = used ? await findPopulationsById(actor, [used]) : undefined;
+  const agesCooling = asked && finished ? await findAgesCooling(actor, finished.id) : null;
   return (
     <>
       <ResultScreen
@@ -43,6 +45,7 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
         run={run}
         runPopulation={(used && populations?.get(used)) || null}
         asked={asked}
+        agesCooling={agesCooling}
       />
       <NotesOf actor={actor} on={{ kind: 'analysis', key: analysis.key }} />
     </>

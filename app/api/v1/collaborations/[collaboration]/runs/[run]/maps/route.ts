@@ -1,19 +1,7 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
+import { answerMaps } from '@/app/api/v1/stacked-maps';
 import { getRunMaps } from '@/lib/services/runs';
 
-/** uint16 little-endian, [star, mass, semi-major axis]; a run's maps never change. */
-export const GET = collaborationRoute({ scope: 'read' }, async ({ actor, params, request }) => {
-  const { bytes, shape, digest } = await getRunMaps(actor, params.run);
-  const headers = {
-    ETag: `"${digest}"`,
-    'Cache-Control': 'private, max-age=31536000, immutable',
-    'X-Rarebound-Shape': shape.join(','),
-    'X-Rarebound-Scale': '65535',
-  };
-  if (request.headers.get('if-none-match') === `"${digest}"`) {
-    return new Response(null, { status: 304, headers });
-  }
-  return new Response(new Uint8Array(bytes), {
-    headers: { ...headers, 'Content-Type': 'application/octet-stream' },
-  });
-});
+export const GET = collaborationRoute({ scope: 'read' }, async ({ actor, params, request }) =>
+  answerMaps(await getRunMaps(actor, params.run), request),
+);
