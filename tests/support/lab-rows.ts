@@ -1,4 +1,5 @@
 import { createHash, randomBytes } from 'node:crypto';
+import { AGE_SHIFTS } from '@/lib/schemas/stack-choices';
 import { encodeMap } from '@/lib/sensitivity';
 import { CompletenessMapRow, database, RunRow, type TargetRow } from '@/models';
 import { buildExportRun, mapOfStar } from './export-run';
@@ -95,4 +96,32 @@ export async function buildRun(
     frozen_by_name: 'R. Castellan',
   });
   return run;
+}
+
+/** An answered question about ages and cooling that keeps one stack: the run's own maps once more. */
+export async function buildKeptMaps(run: RunRow, map: string): Promise<string> {
+  const { collaborationId, createdBy } = run;
+  const job = await insert('job', {
+    ...{ collaboration_id: collaborationId, kind: 'compute-study', status: 'done' },
+    requested_by: createdBy,
+  });
+  const row = { limit: 0.1, exposure: 1, fault: null, hasMaps: true, starsUnchanged: 0 };
+  const model = { model: 'as-run', name: 'as it was', startCondition: 'unstated' };
+  const study = await insert('study', {
+    ...{ collaboration_id: collaborationId, run_id: run.id, number: 2, job_id: job },
+    ...{ kind: 'ages-cooling', settings: '{"kind": "ages-cooling"}', settings_digest: secret() },
+    ...{ seed: '0', engine_version: '1', created_by: createdBy },
+    ...{ headline: 'One', result_digest: secret(), finished_at: new Date() },
+    result: JSON.stringify({
+      ...{ kind: 'ages-cooling', baseline: 0.1, ageShifts: AGE_SHIFTS, notes: [] },
+      models: [{ ...model, shifts: AGE_SHIFTS.map(() => row) }],
+    }),
+  });
+  for (const position of run.inputs?.stars.keys() ?? []) {
+    await insert('study_map', {
+      ...{ study_id: study, stack: AGE_SHIFTS.indexOf(0), position },
+      ...{ collaboration_id: collaborationId, map_id: map },
+    });
+  }
+  return study;
 }

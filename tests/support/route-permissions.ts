@@ -214,6 +214,7 @@ export const routePermissions: Record<string, RoutePermission> = {
   }),
   'get /studies': read(),
   'get /studies/{study}': read(),
+  'get /studies/{study}/maps': read({ ids: (ids) => ({ ...ids, study: ids.keptMaps }) }),
   'delete /studies/{study}': runIts(),
   'get /jobs': read(),
   'get /jobs/{job}': read(),

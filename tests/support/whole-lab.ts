@@ -3,7 +3,7 @@ import type { Actor } from '@/lib/access/actor';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import { beginFile } from '@/lib/services/unfinished-files';
 import { CoolingTableRow, database, type RunRow, type SurveyRow } from '@/models';
-import { buildMap, buildRun, buildUpload, insert, secret } from './lab-rows';
+import { buildKeptMaps, buildMap, buildRun, buildUpload, insert, secret } from './lab-rows';
 import {
   addMember,
   createCollaborationWith,
@@ -93,7 +93,8 @@ async function buildWork({ team, people, survey }: Made, offset: number, map: st
     engine_version: '1',
     created_by: personId,
   });
-  return { population, analysis, draft, run, study, job: jobId };
+  const keptMaps = await buildKeptMaps(run, map);
+  return { population, analysis, draft, run, study, keptMaps, job: jobId };
 }
 
 async function buildTeaching({ team, people }: Made, run: RunRow, offset: number, by: string) {
@@ -280,6 +281,7 @@ export async function buildWholeLab(
       populationId: work.population.id,
       run: work.run.id,
       study: work.study,
+      keptMaps: work.keptMaps,
       job: work.job,
       exercise: `E-${offset}`,
       submission,

@@ -1,8 +1,15 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '@/lib/access/actor';
 import { type StudyKind, studySettingsSchema } from '@/lib/schemas/study-settings';
-import { startStudy } from '@/lib/services/studies';
-import { CompletenessMapRow, type RunRow, type SurveyRow, TargetRow } from '@/models';
+import { getStudyMaps, removeStudy, startStudy } from '@/lib/services/studies';
+import {
+  CompletenessMapRow,
+  CoolingTableRow,
+  type RunRow,
+  type SurveyRow,
+  TargetRow,
+} from '@/models';
+import { answerRunQuestion } from '@/workers/answers/run-question';
 import { withDatabase } from '../support/database';
 import { actorOf, createCollaborationWith } from '../support/people';
 import {
@@ -13,7 +20,7 @@ import {
   buildTarget,
   recipeOf,
 } from '../support/sample';
-import { askToEnd, type GivenSettings } from '../support/study';
+import { askToEnd, type GivenSettings, questionOfRun } from '../support/study';
 import { askForMaps, runToEnd, untilEnded } from '../support/work';
 import { killWorkers, startWorker } from '../support/worker';
 
@@ -102,6 +109,89 @@ describe('what moves the limit', () => {
     const again = await ask<'systematics'>(run, { kind: 'systematics', changes });
     expect(again.result).toEqual(result);
     expect(await mapCount()).toBe(maps);
+  });
+
+  it('keeps the maps of other ages and cooling models, and the limits on them', async () => {
+    const cold = await CoolingTableRow.create({
+      ...{ collaborationId, name: 'Cold start', digest: 'cold', startCondition: 'cold' },
+      ...{ massMjup: [0.1, 100], ageMyr: [0.1, 14_000] },
+      magnitudes: { H: [14, 19, 6, 11], J: [1, 1, 1, 1] },
+    });
+    const { study, result } = await ask<'ages-cooling'>(run, { kind: 'ages-cooling' });
+    expect(result.models.map(({ model, startCondition }) => [model, startCondition])).toEqual([
+      ['as-run', 'unstated'],
+      [cold.id, 'cold'],
+    ]);
+    const [own, other] = result.models;
+    expect(own.shifts.map(({ fault }) => fault)).toEqual([null, null, null, null, null]);
+    expect(own.shifts[2].limit).toBe(limitOf(run));
+    expect(own.shifts[2].starsUnchanged).toBe(run.result?.stars);
+    const limits = own.shifts.map(({ limit }) => limit as number);
+    expect([...limits].sort((a, b) => a - b)).toEqual(limits);
+    const changes = await ask<'systematics'>(run, {
+      kind: 'systematics',
+      changes: [
+        { change: 'ages-young' },
+        { change: 'ages-old' },
+        { change: 'cooling', coolingTableId: cold.id },
+      ],
+    });
+    expect(changes.result.rows.map(({ limit }) => limit)).toEqual([
+      limits[1],
+      limits[3],
+      other.shifts[2].limit,
+    ]);
+
+    const question = await questionOfRun(run);
+    const stack = async (cooling: string, age: number) => {
+      const { bytes, shape } = await getStudyMaps(actor, study.id, { cooling, age });
+      expect(shape).toEqual([
+        5,
+        question.grid.massMjup.length,
+        question.grid.semiMajorAxisAu.length,
+      ]);
+      return new Uint16Array(Uint8Array.from(bytes).buffer);
+    };
+    expect(await stack('as-run', 0)).toEqual(question.maps);
+    for (const { model, shifts } of result.models) {
+      for (const [i, age] of result.ageShifts.entries()) {
+        const { limit } = answerRunQuestion({ ...question, maps: await stack(model, age) });
+        expect(limit).toBeCloseTo(shifts[i].limit as number, 12);
+      }
+    }
+    await expect(
+      getStudyMaps(actor, changes.study.id, { cooling: 'as-run', age: 0 }),
+    ).rejects.toThrow('maps of this question');
+    await expect(getStudyMaps(actor, study.id, { cooling: 'built-in', age: 0 })).rejects.toThrow(
+      'this age and cooling model',
+    );
+    await expect(query('update study_map set position = 99')).rejects.toThrow('are not changed');
+    await removeStudy(actor, study.id);
+    expect(await query('select 1 from study_map')).toEqual([]);
+    await removeStudy(actor, changes.study.id);
+    await cold.destroy();
+  });
+
+  it('says why an age has no maps, and keeps the others', async () => {
+    const narrow = await CoolingTableRow.create({
+      ...{ collaborationId, name: 'Narrow', digest: 'narrow' },
+      ...{ massMjup: [0.1, 100], ageMyr: [5, 60] },
+      magnitudes: { H: [14, 19, 6, 11] },
+    });
+    const { study, result } = await ask<'ages-cooling'>(run, {
+      kind: 'ages-cooling',
+      coolingTableIds: [narrow.id],
+    });
+    const shifts = result.models[1].shifts;
+    const old = shifts[4];
+    expect(old).toMatchObject({ limit: null, hasMaps: false });
+    expect(old.fault).toMatch(/Star \d: age node .* must be between 5 and 60 Myr for Narrow/);
+    await expect(getStudyMaps(actor, study.id, { cooling: narrow.id, age: 2 })).rejects.toThrow(
+      'this age and cooling model',
+    );
+    expect(shifts.some(({ hasMaps }) => hasMaps)).toBe(true);
+    await removeStudy(actor, study.id);
+    await narrow.destroy();
   });
 
   it('gives the limit that a run with the same change gives', async () => {

@@ -49,7 +49,7 @@ function summary(
 
 describe('kinds of questions', () => {
   it('all have a title, a question and an address, and no screen says "study"', () => {
-    expect(kindOrder).toHaveLength(10);
+    expect(kindOrder).toHaveLength(11);
     for (const kind of kindOrder) {
       expect(kindWords[kind].question).toMatch(/\?$/);
       expect(`${kindWords[kind].title} ${kindWords[kind].question}`).not.toMatch(/stud(y|ies)/i);

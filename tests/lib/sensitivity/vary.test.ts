@@ -22,6 +22,15 @@ describe('varyStar', () => {
     expect('mixture' in old ? null : old.medianMyr / 20).toBeCloseTo(ratio, 9);
   });
 
+  test('ages: any sigma is a power of the quoted ratio, each side by its own', () => {
+    const star = buildStar({ age: { medianMyr: 24, lowerMyr: 18, upperMyr: 36 } });
+    const at = (sigma: number) => varyStar(star, { kind: 'ages', sigma }).age;
+    expect(at(2)).toEqual({ medianMyr: 54, lowerMyr: 40.5, upperMyr: 81 });
+    expect(at(-2)).toMatchObject({ medianMyr: 13.5 });
+    expect(at(0.5)).toMatchObject({ medianMyr: expect.closeTo(24 * Math.sqrt(1.5), 9) });
+    expect(at(0)).toEqual(star.age);
+  });
+
   test('ages: each law of a mixture moves by its own ratio', () => {
     const age = {
       mixture: [
