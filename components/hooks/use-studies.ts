@@ -11,6 +11,7 @@ import { request, requestNothing } from './request';
 const POLL_MS = 1000;
 
 const isOpen = ({ status }: JobView) => status === 'waiting' || status === 'running';
+/** Given as an arrow of each render: the same function twice would not be asked after new data. */
 const pollWhileOpen = (studies: StudySummary[] | undefined) =>
   studies?.some(({ job }) => isOpen(job)) ? POLL_MS : 0;
 
@@ -23,7 +24,7 @@ export function useRunStudies(collaboration: string, runId: string | undefined) 
   return useSWR(
     runId === undefined ? null : apiPath(collaboration, 'runs', runId, 'studies'),
     fetchStudies,
-    { refreshInterval: pollWhileOpen },
+    { refreshInterval: (studies) => pollWhileOpen(studies) },
   );
 }
 
@@ -35,7 +36,7 @@ export function useStudiesOfKind(
 ) {
   return useSWR(withQuery(apiPath(collaboration, 'studies'), { kind }), fetchStudies, {
     fallbackData: fallback,
-    refreshInterval: pollWhileOpen,
+    refreshInterval: (studies) => pollWhileOpen(studies),
   });
 }
 

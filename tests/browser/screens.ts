@@ -38,6 +38,7 @@ export const labScreens = [
     'analyses/A-1',
     'analyses/A-1/calibration',
     'analyses/A-1/studies/systematics',
+    'analyses/A-1/studies/ages-cooling',
     'analyses/A-1/studies/influence',
     'analyses/A-1/studies/limit-map',
     'analyses/A-1/studies/sweep',
