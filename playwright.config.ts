@@ -9,7 +9,7 @@ export default defineConfig({
   testDir: 'tests/browser',
   outputDir: 'test-results',
   // Two files at a time: while one waits for the worker pool the other looks at pages.
-  workers: 3,
+  workers: 2,
   forbidOnly: true,
   timeout: 180_000,
   expect: { timeout: 30_000 },

@@ -18,6 +18,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { ruleNames } from '@/lib/schemas/combination-words';
 import type {
   CombinationDefinition,
+  CombinationPreview,
   CombinationRule,
   CombinationView,
 } from '@/lib/schemas/combinations';
@@ -36,8 +37,8 @@ interface CombineScreenProps {
   surveys: SurveyView[];
   initial: CombinationView[];
   canCombine: boolean;
-  /** The rule that a new combination begins with. */
-  usualRule: CombinationDefinition['rule'];
+  /** What a new combination begins with; without its counts where it is not one yet. */
+  first: { definition: CombinationDefinition; preview?: CombinationPreview };
 }
 
 /** Several surveys as one sample: order, rule for shared stars, grid, and what each survey adds. */
@@ -46,18 +47,19 @@ export function CombineScreen({
   surveys,
   initial,
   canCombine,
-  usualRule,
+  first,
 }: CombineScreenProps) {
   const { data: combinations = initial, mutate } = useCombinations(collaboration, initial);
-  const [draft, setDraft] = useState<CombinationDefinition>({
-    surveyIds: surveys.map(({ id }) => id),
-    rule: usualRule,
-    starRules: [],
-    grid: { choice: 'common' },
-  });
+  const [draft, setDraft] = useState(first.definition);
   const checked = useSchema(loadSchema)?.safeParse(draft);
-  const definition = checked?.data;
-  const { data: preview, error, isLoading } = useCombinationPreview(collaboration, definition);
+  const isFirst = draft === first.definition && first.preview !== undefined;
+  // The page has checked what it begins with: its counts need not wait for the schema.
+  const definition = isFirst ? draft : checked?.data;
+  const {
+    data: preview,
+    error,
+    isLoading,
+  } = useCombinationPreview(collaboration, definition, isFirst ? first.preview : undefined);
   const saving = useVersionSave<CombinationView>(async ({ name, versionOf }) => {
     if (!definition) throw new Error('what is saved was not checked');
     const saved = await createCombination(collaboration, { name, definition, versionOf });

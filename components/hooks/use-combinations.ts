@@ -24,13 +24,19 @@ export function useCombinations(collaboration: string, fallback?: CombinationVie
 export function useCombinationPreview(
   collaboration: string,
   definition: CombinationDefinition | undefined,
+  fallback?: CombinationPreview,
 ) {
   const path = apiPath(collaboration, 'combinations', 'preview');
   return useSWR<CombinationPreview>(
     definition ? [path, JSON.stringify(definition)] : null,
     () =>
       request(path, answer('combinationPreviewSchema'), { method: 'POST', body: { definition } }),
-    { keepPreviousData: true, revalidateOnFocus: false },
+    {
+      keepPreviousData: true,
+      revalidateOnFocus: false,
+      fallbackData: fallback,
+      revalidateIfStale: fallback === undefined,
+    },
   );
 }
 
