@@ -14,7 +14,6 @@ import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { ExportMenu } from './export-menu';
 import type { LiveSetting } from './live-setting';
-import { isAsRun } from './live-stacks';
 import { recipeWords } from './recipe-words';
 import { copyAndRun, recipeOf, saveAndRun } from './save-setting';
 
@@ -31,7 +30,10 @@ interface KeptActionsProps {
 }
 
 interface ResultActionsProps extends KeptActionsProps {
-  setting: LiveSetting;
+  /** The setting at the moment of the press: it moves too often to be handed down. */
+  settingNow(): LiveSetting;
+  /** It asks for other ages or another cooling model, which no run can have. */
+  isWhatIf: boolean;
   isUnsaved: boolean;
   onUndo(): void;
 }
@@ -43,9 +45,10 @@ const mayChange = ({ can }: AnalysisView) => can.change && can.run;
 const nextNumber = ({ runs }: AnalysisView) => (runs[0]?.number ?? 0) + 1;
 
 /** What becomes of a change, and what may be done with a result. */
-export function ResultActions({ setting, isUnsaved, onUndo, ...kept }: ResultActionsProps) {
+export function ResultActions(props: ResultActionsProps) {
+  const { settingNow, isWhatIf, isUnsaved, onUndo, ...kept } = props;
   return isUnsaved ? (
-    <ChangeActions {...kept} setting={setting} onUndo={onUndo} />
+    <ChangeActions {...kept} {...{ settingNow, isWhatIf, onUndo }} />
   ) : (
     <KeptActions {...kept} />
   );
@@ -92,23 +95,24 @@ function useWork(collaboration: string, onSaved: () => void) {
 }
 
 function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
-  const { collaboration, analysis, setting, isBusy, onUndo, onSaved } = props;
+  const { collaboration, analysis, settingNow, isBusy, onUndo, onSaved } = props;
   const isFoot = props.placement === 'foot';
   const { work, perform, dialog } = useWork(collaboration, onSaved);
   const isOwn = mayChange(analysis);
-  const whatIf = isAsRun(setting) ? undefined : WHAT_IF;
+  const whatIf = props.isWhatIf ? WHAT_IF : undefined;
   const next = nextNumber(analysis);
   // Drawn from the first change on: this recipe is the one that the change began from.
   const editing = useEditing(analysis.recipe);
   const save = () =>
     perform('save', async () => {
+      const setting = settingNow();
       const mine = await recipeOf(editing.opened(), setting);
       const isStored = await editing.attempt(mine, (recipe) =>
         saveAndRun(collaboration, { ...analysis, recipe }, setting),
       );
       return isStored ? undefined : HELD;
     });
-  const saveCopy = () => perform('copy', () => copyAndRun(collaboration, analysis, setting));
+  const saveCopy = () => perform('copy', () => copyAndRun(collaboration, analysis, settingNow()));
   return (
     <>
       <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>

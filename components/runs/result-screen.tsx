@@ -1,7 +1,7 @@
 'use client';
 
 import dynamic from 'next/dynamic';
-import { useMemo, useState } from 'react';
+import { useCallback, useMemo, useRef, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
 import { usePopulations } from '@/components/hooks/use-populations';
@@ -14,6 +14,7 @@ import type { RunView } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
+import { isAsRun } from './live-stacks';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
 import { RunNotices } from './run-notices';
@@ -90,44 +91,64 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
   const isUnsaved = moved !== undefined && !isSameSetting(moved, inRecipe);
   useAddressQuery(settingToQuery(setting, inRecipe));
 
-  const refresh = () => {
+  const latest = useRef(setting);
+  latest.current = setting;
+  const isWhatIf = !isAsRun(setting);
+  const inRun = useMemo(
+    () => (run && definition && settingOfRun(run, definition)) ?? inRecipe,
+    [run, definition, inRecipe],
+  );
+  const refresh = useCallback(() => {
     void mutate();
-  };
-  const actions = (placement: 'head' | 'foot') => (
-    <ResultActions
-      placement={placement}
-      collaboration={collaboration}
-      analysis={analysis}
-      run={finished}
-      setting={setting}
-      isUnsaved={isUnsaved}
-      isBusy={isOnItsWay(newest)}
-      onUndo={() => setMoved(undefined)}
-      onSaved={() => {
-        setMoved(undefined);
-        refresh();
-      }}
-    />
+  }, [mutate]);
+  const actions = useMemo(() => {
+    const make = (placement: 'head' | 'foot') => (
+      <ResultActions
+        placement={placement}
+        collaboration={collaboration}
+        analysis={analysis}
+        run={finished}
+        settingNow={() => latest.current}
+        isWhatIf={isWhatIf}
+        isUnsaved={isUnsaved}
+        isBusy={isOnItsWay(newest)}
+        onUndo={() => setMoved(undefined)}
+        onSaved={() => {
+          setMoved(undefined);
+          refresh();
+        }}
+      />
+    );
+    return { head: make('head'), foot: make('foot') };
+  }, [collaboration, analysis, finished, newest, isWhatIf, isUnsaved, refresh]);
+  // The same elements while a hand moves a control: nothing of them is drawn anew.
+  const head = useMemo(
+    () => (
+      <>
+        <PageTitle
+          title={analysis.name}
+          crumbs={[
+            { href: `/${collaboration}/analyses`, label: 'Analyses' },
+            { label: analysis.key },
+          ]}
+          state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
+          actions={actions.head}
+        />
+        <RunNotices
+          collaboration={collaboration}
+          analysis={analysis}
+          run={finished}
+          needsRun={!needsOnlyLive(analysis, run)}
+          onChanged={refresh}
+        />
+      </>
+    ),
+    [collaboration, analysis, finished, run, isUnsaved, actions, refresh],
   );
 
   return (
     <>
-      <PageTitle
-        title={analysis.name}
-        crumbs={[
-          { href: `/${collaboration}/analyses`, label: 'Analyses' },
-          { label: analysis.key },
-        ]}
-        state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
-        actions={actions('head')}
-      />
-      <RunNotices
-        collaboration={collaboration}
-        analysis={analysis}
-        run={finished}
-        needsRun={!needsOnlyLive(analysis, run)}
-        onChanged={refresh}
-      />
+      {head}
       {run?.result && run.inputs && definition ? (
         <ResultBody
           key={run.id}
@@ -135,12 +156,12 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
           run={run}
           inputs={run.inputs}
           result={run.result}
-          inRun={settingOfRun(run, definition) ?? inRecipe}
+          inRun={inRun}
           setting={setting}
           isUnsaved={isUnsaved}
           agesCooling={run.id === props.run?.id ? props.agesCooling : null}
           canAsk={analysis.can.run}
-          footActions={actions('foot')}
+          footActions={actions.foot}
           onSetting={setMoved}
         />
       ) : (

@@ -31,11 +31,15 @@ export function SectionOpener({
     <header className="relative mb-3.5 border-rule2 border-t">
       <LogTicks />
       <div className="flex flex-wrap items-baseline gap-x-3 gap-y-1 pt-[17px]">
-        <Heading id={id} className="text-section tracking-[-0.003em]">
-          {number !== undefined && <span className="mr-[9px] font-normal text-ink3">{number}</span>}
-          {title}
-        </Heading>
-        {help !== undefined && <HelpMark word={help} className="-ml-2.5 self-center" />}
+        <div className="flex min-w-0 items-center gap-x-0.5">
+          <Heading id={id} className="text-section tracking-[-0.003em]">
+            {number !== undefined && (
+              <span className="mr-[9px] font-normal text-ink3">{number}</span>
+            )}
+            {title}
+          </Heading>
+          {help !== undefined && <HelpMark word={help} />}
+        </div>
         {context !== undefined && <p className="text-ink2 text-note">{context}</p>}
         {tools !== undefined && (
           <div className="ml-auto flex flex-wrap items-center gap-3 text-note">{tools}</div>
