@@ -1,6 +1,6 @@
 'use client';
 
-import { useMemo, useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
 import type { StarDot } from '@/components/charts/star-dots';
 import { SelectField } from '@/components/ui/select-field';
 import { TextAction } from '@/components/ui/text-action';
@@ -8,12 +8,14 @@ import type { PopulationView, RateQuantity } from '@/lib/inference';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatPercent } from '@/lib/quantities/display';
 import type { RunInputs } from '@/lib/schemas/runs';
+import { keptFromHash, keptToHash } from './kept-address';
 import { limitWithout, withoutWords } from './limit-without';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
 
 interface LeaveOutProps {
   inputs: RunInputs;
+  runNumber: number;
   stars: StarDot[];
   /** Undefined until the maps are there. */
   sample?: LiveSample;
@@ -25,17 +27,12 @@ interface LeaveOutProps {
   onChosen(names: ReadonlySet<string>): void;
 }
 
-interface Kept {
-  name: string;
-  names: ReadonlySet<string>;
-}
-
 const choose = 'choose, press a dot or frame dots';
 
 /** The limit without some stars, and those answers that are kept to compare with. */
 export function LeaveOut(props: LeaveOutProps) {
   const { inputs, stars, sample, view, setting, limit, quantity, chosen, onChosen } = props;
-  const [kept, setKept] = useState<Kept[]>([]);
+  const [kept, setKept] = useKept(props.runNumber, inputs);
   const groups = useMemo(() => groupsOf(inputs, stars), [inputs, stars]);
   const without = useMemo(
     () => (sample && view ? limitWithout(sample, view, setting, chosen) : undefined),
@@ -75,11 +72,8 @@ export function LeaveOut(props: LeaveOutProps) {
         )}
         {chosen.size > 0 && without && words && (
           <span className="flex gap-4 pb-1.5">
-            {!kept.some(({ names }) => isSame(names, chosen)) && (
-              <TextAction
-                icon="compare"
-                onClick={() => setKept([...kept, { name: words, names: chosen }])}
-              >
+            {!kept.some((names) => isSame(names, chosen)) && (
+              <TextAction icon="compare" onClick={() => setKept([...kept, chosen])}>
                 Keep as a comparison
               </TextAction>
             )}
@@ -95,33 +89,53 @@ export function LeaveOut(props: LeaveOutProps) {
           sample={sample}
           view={view}
           kept={kept}
-          onDrop={(name) => setKept(kept.filter((one) => one.name !== name))}
+          groups={groups}
+          onDrop={(names) => setKept(kept.filter((one) => one !== names))}
         />
       )}
     </div>
   );
 }
 
-/** Each follows the controls; they are not part of the run, and go with the page. */
+/** Sets of stars that are kept to compare with: the address of the page carries them. */
+function useKept(run: number, inputs: RunInputs) {
+  const names = useMemo(() => inputs.stars.map(({ name }) => name), [inputs]);
+  const [kept, setKept] = useState<readonly ReadonlySet<string>[]>([]);
+  // Not before the first paint: the server has drawn it, and does not know this part of the address.
+  useEffect(() => setKept(keptFromHash(run, names, window.location.hash)), [run, names]);
+  const keep = (next: readonly ReadonlySet<string>[]) => {
+    setKept(next);
+    const { pathname, search } = window.location;
+    window.history.replaceState(null, '', `${pathname}${search}${keptToHash(run, names, next)}`);
+  };
+  return [kept, keep] as const;
+}
+
+/** Each follows the controls; they are not part of the run. */
 function KeptAnswers(
   props: LeaveOutProps & {
     sample: LiveSample;
     view: PopulationView;
-    kept: Kept[];
-    onDrop(name: string): void;
+    kept: readonly ReadonlySet<string>[];
+    groups: Group[];
+    onDrop(names: ReadonlySet<string>): void;
   },
 ) {
-  const { sample, view, setting, kept, quantity, limit, onDrop, onChosen } = props;
+  const { sample, view, setting, kept, groups, quantity, limit, onDrop, onChosen } = props;
   return (
     <ul className="grid gap-1 border-rule border-t pt-2">
       <li className="text-ink3">
         Kept beside {formatLimit(limit, quantity)} of all {view.stars} stars, all at{' '}
-        {describeLevel(setting.credibleLevel)}; they follow the controls and no run records them
+        {describeLevel(setting.credibleLevel)}; they follow the controls and stand in the address of
+        this page, and no run records them
       </li>
-      {kept.map(({ name, names }) => {
+      {kept.map((names) => {
         const answer = limitWithout(sample, view, setting, names);
+        const group = groups.find((one) => isSame(one.names, names));
+        const left = answer ?? { stars: names.size, detections: [] };
+        const name = withoutWords(left, group?.name);
         return (
-          <li key={name} className="flex flex-wrap items-baseline gap-x-4">
+          <li key={[...names].join()} className="flex flex-wrap items-baseline gap-x-4">
             <span className="limit w-28 text-right">
               {answer ? formatLimit(answer.limit, quantity) : 'no answer'}
             </span>
@@ -131,7 +145,7 @@ function KeptAnswers(
             <span className="text-ink3">
               {answer && limit > 0 ? `${(answer.limit / limit).toFixed(2)} times the limit` : ''}
             </span>
-            <TextAction icon="close" onClick={() => onDrop(name)}>
+            <TextAction icon="close" onClick={() => onDrop(names)}>
               Drop
             </TextAction>
           </li>

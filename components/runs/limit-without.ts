@@ -61,7 +61,10 @@ export function limitWithout(
 }
 
 /** "these 66 stars and their one detection": what was left out, in words. */
-export function withoutWords({ stars, detections }: WithoutStars, name?: string): string {
+export function withoutWords(
+  { stars, detections }: Pick<WithoutStars, 'stars' | 'detections'>,
+  name?: string,
+): string {
   const what = name ?? (stars === 1 ? 'this star' : `these ${stars} stars`);
   if (detections.length === 0) return what;
   const count = detections.length === 1 ? 'one detection' : `${detections.length} detections`;

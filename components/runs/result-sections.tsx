@@ -140,13 +140,15 @@ const LimitsAndDetections = memo(function LimitsAndDetections(props: ResultSecti
   );
 });
 
-const Stars = memo(function Stars({ inputs, result, sample, followed }: ResultSectionsProps) {
+const Stars = memo(function Stars(props: ResultSectionsProps) {
+  const { inputs, result, run, sample, followed } = props;
   const place = useRef<HTMLDivElement>(null);
   const { shown } = useCalm(followed, { paceMs: PACE_MS, seen: place });
   return (
     <div ref={place} className="md:mt-8">
       <StarsSection
         inputs={inputs}
+        runNumber={run.number}
         result={result}
         sample={sample}
         view={shown.view}

@@ -19,6 +19,8 @@ interface StarsSectionProps {
   view?: PopulationView;
   /** None where no control knows the population: then no limit is shown without some stars. */
   setting?: LiveSetting;
+  /** Beside a setting: the run whose stars may be left out. */
+  runNumber?: number;
   limit: number;
   quantity: RateQuantity;
   counted: { name: string; starId: string }[];
@@ -71,8 +73,9 @@ export function StarsSection(props: StarsSectionProps) {
       }
     >
       <StarDots stars={stars} selected={chosen} onSelect={(names) => setChosen(new Set(names))} />
-      {setting && (
+      {setting && props.runNumber !== undefined && (
         <LeaveOut
+          runNumber={props.runNumber}
           {...{ inputs, stars, sample, view, setting, limit, quantity, chosen }}
           onChosen={setChosen}
         />
