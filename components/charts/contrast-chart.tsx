@@ -94,15 +94,10 @@ export function ContrastChart({ curves, selected, nSigma, height }: ContrastChar
         <path className="median-curve" d={linePath(summary.separation, summary.median, x, y)} />
       )}
       {chosen && (
-        <>
-          <path
-            className="chosen-curve"
-            d={linePath(chosen.separationArcsec, chosen.contrastMag, x, y)}
-          />
-          <text className="bold page-halo" x={frame.right} y={frame.bottom - 10} textAnchor="end">
-            {chosen.name}
-          </text>
-        </>
+        <path
+          className="chosen-curve"
+          d={linePath(chosen.separationArcsec, chosen.contrastMag, x, y)}
+        />
       )}
       <text className="quiet page-halo" x={frame.right} y={frame.top + 8} textAnchor="end">
         {contrastName}
@@ -110,6 +105,17 @@ export function ContrastChart({ curves, selected, nSigma, height }: ContrastChar
       {curves.length > 2 && (
         <text className="page-halo" x={frame.right} y={frame.top + 28} textAnchor="end">
           median, 68{'\u2009'}% band
+        </text>
+      )}
+      {chosen && (
+        // Above, where no curve reaches: they end deep at the right.
+        <text
+          className="bold page-halo"
+          x={frame.right}
+          y={frame.top + (curves.length > 2 ? 48 : 28)}
+          textAnchor="end"
+        >
+          {chosen.name}
         </text>
       )}
       {at && (

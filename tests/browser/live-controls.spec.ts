@@ -49,3 +49,19 @@ test('ages and cooling model are moved under the hand, come back from the addres
   stop();
   expect(faults).toEqual([]);
 });
+
+test('what is kept to compare with comes back with the address', async ({ page }) => {
+  await signIn(page, 'statistician');
+  await page.goto(`${LAB}/analyses/A-1`);
+  const choice = page.getByRole('combobox', { name: 'Limit without some stars' });
+  await choice.selectOption({ label: 'all 2 hosts of detections' });
+  await page.getByRole('button', { name: 'Keep as a comparison' }).click();
+  const kept = page.getByRole('listitem').filter({ hasText: 'without the 2 hosts' });
+  await expect(kept).toHaveText(/^<\d.*and their 2 detections.*times the limit/);
+  const words = (await kept.textContent()) ?? '';
+  await expect(page).toHaveURL(/#without=\d+~/);
+  await page.reload();
+  await expect(kept).toHaveText(words);
+  await kept.getByRole('button', { name: 'Drop' }).click();
+  await expect(page).not.toHaveURL(/#/);
+});
