@@ -77,36 +77,40 @@ export function lawsOffered(setting: LiveSetting, saved: LiveSetting): PriorLaw[
   return [...new Set([...priorLaws(setting.likelihood), setting.prior.law, ...own])];
 }
 
-export function switchConsequences(
+function* switchesInSteps(
   sample: LiveSample,
   view: PopulationView,
   setting: LiveSetting,
   saved: LiveSetting,
   laws: PriorLaw[],
-): Omit<SwitchConsequences, 'cooling'> {
-  const limit = (changed: LiveSetting) =>
-    orNull(() => answerFromView(view, askedOf(sample, changed)).limit) ?? undefined;
+): Steps<Omit<SwitchConsequences, 'cooling'>> {
+  function* limit(changed: LiveSetting): Steps<number | undefined> {
+    yield;
+    return orNull(() => answerFromView(view, askedOf(sample, changed)).limit) ?? undefined;
+  }
   const followed = rateDependent(setting, saved);
   const treated = (candidates: LiveSetting['candidates']) => limit({ ...setting, candidates });
   const ofLikelihood = (likelihood: Likelihood) =>
     limit(withLikelihood(setting, likelihood, saved));
+  const prior: SwitchConsequences['prior'] = {};
+  for (const law of laws) {
+    prior[law] = yield* limit({ ...setting, prior: priorChosen(law, setting, saved) });
+  }
   return {
     detections: {
-      counted: limit({ ...setting, detections: 'counted' }),
-      none: limit({ ...setting, detections: 'none' }),
+      counted: yield* limit({ ...setting, detections: 'counted' }),
+      none: yield* limit({ ...setting, detections: 'none' }),
     },
     candidates: {
-      none: treated(undefined),
-      fixed: treated({ treatment: 'fixed' }),
-      'rate-dependent': followed && treated(followed),
+      none: yield* treated(undefined),
+      fixed: yield* treated({ treatment: 'fixed' }),
+      'rate-dependent': followed && (yield* treated(followed)),
     },
     likelihood: {
-      'host-fraction': ofLikelihood('host-fraction'),
-      'mean-number': ofLikelihood('mean-number'),
+      'host-fraction': yield* ofLikelihood('host-fraction'),
+      'mean-number': yield* ofLikelihood('mean-number'),
     },
-    prior: Object.fromEntries(
-      laws.map((law) => [law, limit({ ...setting, prior: priorChosen(law, setting, saved) })]),
-    ),
+    prior,
   };
 }
 
@@ -142,8 +146,8 @@ export function* consequencesInSteps(
   if (view === null) return null;
   const levels = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
   const laws = lawsOffered(setting, saved);
-  const switches = switchConsequences(sample, view, setting, saved, laws);
   yield;
+  const switches = yield* switchesInSteps(sample, view, setting, saved, laws);
   return {
     massIndex: yield* linearTrackInSteps(sample, setting, saved, 'massIndex'),
     semiMajorAxisIndex: yield* linearTrackInSteps(sample, setting, saved, 'semiMajorAxisIndex'),

@@ -2,9 +2,9 @@ import type { Steps } from './consequences';
 import type { LiveSample } from './live-sample';
 import { type FromThread, liveTasks, type ToThread } from './live-tasks';
 
-/** Work and rest in turn, so that a machine of two cores keeps one for the page. */
-const WORK_MS = 4;
-const REST_MS = 4;
+/** Works a quarter of the time, so that a machine of two cores keeps one and a half for the page. */
+const WORK_MS = 3;
+const REST_MS = 9;
 
 let sample: LiveSample | undefined;
 

@@ -226,7 +226,7 @@ export function ResultBody(props: ResultBodyProps) {
 }
 
 /** How often the tracks of the other controls follow a hand. */
-const PACE = { paceMs: 250 };
+const PACE = { paceMs: 400 };
 
 /** The controls with the limits along their tracks, which a thread beside the page computes. */
 function LiveConsole({

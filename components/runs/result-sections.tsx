@@ -38,7 +38,7 @@ interface Followed {
   definition: PowerLawDefinition;
 }
 
-const PACE_MS = 300;
+const PACE_MS = 400;
 
 /** Sections 2 to 5: they hold thousands of marks, so each follows a drag at its own pace. */
 export const ResultSections = memo(function ResultSections(props: ResultSectionsProps) {

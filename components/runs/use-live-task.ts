@@ -1,6 +1,6 @@
 'use client';
 
-import { useEffect, useMemo, useState } from 'react';
+import { startTransition, useEffect, useMemo, useState } from 'react';
 import type { LiveSample } from './live-sample';
 import type { TaskAnswer, TaskArguments, TaskName } from './live-tasks';
 import { type Asker, askThread, joinThread, leaveThread } from './live-thread-link';
@@ -25,7 +25,8 @@ export function useLiveTask<Name extends TaskName>(
 ): LiveTaskState<TaskAnswer<Name>> {
   const [state, setState] = useState<LiveTaskState<TaskAnswer<Name>>>({ answer: undefined });
   const [asker] = useState<Asker>(() => ({
-    onAnswer: (answer) => setState({ answer: answer as TaskAnswer<Name> }),
+    // What follows the hand goes first.
+    onAnswer: (answer) => startTransition(() => setState({ answer: answer as TaskAnswer<Name> })),
     onFault: (fault) => setState(({ answer }) => ({ answer, fault })),
   }));
   const key = JSON.stringify(rest);
