@@ -3,13 +3,13 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { writeGuestNote } from '@/components/hooks/use-releases';
+import { formatDay } from '@/components/runs/time-words';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
 import type { GuestPage } from '@/lib/schemas/release-page';
-import { longDay } from './release-words';
 
 /** Notes of whoever holds the link; the collaboration reads them beside the link. */
 export function GuestNotes({ token, guest }: { token: string; guest: GuestPage['guest'] }) {
@@ -35,13 +35,13 @@ export function GuestNotes({ token, guest }: { token: string; guest: GuestPage['
     <section className="mt-9 print:hidden">
       <SectionOpener
         title="Notes to the collaboration"
-        context={`read by its members; this link ends on ${longDay(guest.expiresAt)}`}
+        context={`read by its members; this link ends on ${formatDay(guest.expiresAt)}`}
       />
       <ul className="mb-4 grid gap-3">
         {notes.map((note) => (
           <li key={note.id} className="max-w-[72ch] border-rule border-b pb-3">
             <p className="text-ink3 text-note">
-              {note.name}, {longDay(note.at)}
+              {note.name}, {formatDay(note.at)}
             </p>
             <p className="whitespace-pre-wrap">{note.body}</p>
           </li>

@@ -1,3 +1,4 @@
+import { formatDay } from '@/components/runs/time-words';
 import { FormulaWords } from '@/components/ui/formula-words';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -12,7 +13,7 @@ import { ReleaseFiles } from './release-files';
 import { ReleaseMap } from './release-map';
 import { ReleasePlate } from './release-plate';
 import { ReleaseSeal } from './release-seal';
-import { fileAddress, longDay, sizeWords } from './release-words';
+import { fileAddress, sizeWords } from './release-words';
 
 function Head({ page }: { page: Page }) {
   const bundle = page.files.find(({ mediaType }) => mediaType === 'application/zip');
@@ -28,7 +29,9 @@ function Head({ page }: { page: Page }) {
               {page.kind === 'run' ? page.key : `Draft of release ${page.key}`}
             </StateMark>
           )}
-          {page.publishedAt !== null && <span>· {longDay(page.publishedAt)} · cannot change</span>}
+          {page.publishedAt !== null && (
+            <span>· {formatDay(page.publishedAt)} · cannot change</span>
+          )}
         </p>
         <h1 className="text-balance font-light text-title tracking-[-0.012em] max-md:text-statement">
           {page.title}
@@ -72,7 +75,7 @@ function Bars({ page }: { page: Page }) {
   return (
     <div className="mb-4 grid gap-2 empty:hidden">
       {page.withdrawn && (
-        <Notice tone="bad" title={`Withdrawn on ${longDay(page.withdrawn.at)}.`}>
+        <Notice tone="bad" title={`Withdrawn on ${formatDay(page.withdrawn.at)}.`}>
           {page.withdrawn.reason}
         </Notice>
       )}

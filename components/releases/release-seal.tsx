@@ -1,8 +1,9 @@
 import Link from 'next/link';
 import type { ReactNode } from 'react';
+import { formatDay } from '@/components/runs/time-words';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { ReleasePage } from '@/lib/schemas/release-page';
-import { longDay, shortDigest } from './release-words';
+import { shortDigest } from './release-words';
 
 interface Step {
   key: string;
@@ -66,7 +67,7 @@ export function ReleaseSeal({ page }: { page: ReleasePage }) {
             key={key}
             className='relative pl-4 before:absolute before:top-1 before:-left-[6px] before:size-[10px] before:rotate-45 before:border-[1.5px] before:border-ink2 before:bg-page before:content-[""]'
           >
-            <b className="block">{longDay(at)}</b>
+            <b className="block">{formatDay(at)}</b>
             <span className="text-ink2">{what}</span>
           </li>
         ))}

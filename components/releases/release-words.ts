@@ -12,10 +12,6 @@ export const stateWords: Record<ReleaseState, { kind: StateKind; words: string }
   withdrawn: { kind: 'stopped', words: 'withdrawn' },
 };
 
-const day = new Intl.DateTimeFormat('en-GB', { dateStyle: 'long', timeZone: 'UTC' });
-/** "10 February 2026". */
-export const longDay = (moment: string) => day.format(new Date(moment));
-
 /** "18 MB", "4.2 kB". */
 export function sizeWords(bytes: number): string {
   if (bytes < 1000) return `${bytes} B`;

@@ -112,8 +112,7 @@ export function webService({ distFolder, environment, port, isDevelopment }) {
     command: process.execPath,
     args: [nextProgram, ...words, '-H', host, '-p', String(port)],
     cwd: root,
-    // Arenas of many threads each keep what large uploads leave: two hold as much and give it back.
-    env: () => ({ MALLOC_ARENA_MAX: '2', ...environment(), ...nextEnvironment(distFolder) }),
+    env: () => ({ ...environment(), ...nextEnvironment(distFolder) }),
     isReady: () => answers(`http://127.0.0.1:${port}/api/health`),
     readyMs: 90_000,
   };
