@@ -7,7 +7,7 @@ export interface Asker {
 }
 
 /**
- * A thread that holds one sample and serves every asker of it.
+ * A thread that holds one sample, with what has come to it, and serves every asker of it.
  *
  * It works on one question at a time; of the questions that one asker sends meanwhile only the
  * last is kept, so a drag never builds up a queue.
@@ -18,13 +18,20 @@ class LiveThreadLink {
   private working: Asker | undefined;
   private readonly askers = new Set<Asker>();
   private nextId = 0;
+  private held: LiveSample | undefined;
 
-  constructor(sample: LiveSample) {
+  constructor() {
     this.worker = new Worker(new URL('./live-thread.ts', import.meta.url), { type: 'module' });
     this.worker.onmessage = ({ data }: MessageEvent<FromThread>) => this.take(data);
     this.worker.onerror = (event) => {
       for (const asker of this.askers) asker.onFault(event.message || 'the thread did not start');
     };
+  }
+
+  /** From the next question on the thread answers from this one. */
+  hold(sample: LiveSample): void {
+    if (this.held === sample) return;
+    this.held = sample;
     this.worker.postMessage({ kind: 'sample', sample } satisfies ToThread);
   }
 
@@ -32,13 +39,17 @@ class LiveThreadLink {
     this.askers.add(asker);
   }
 
-  /** @returns true once nobody is left and the thread has ended */
-  leave(asker: Asker): boolean {
+  leave(asker: Asker): void {
     this.askers.delete(asker);
     this.waiting.delete(asker);
-    if (this.askers.size > 0) return false;
+  }
+
+  get isAlone(): boolean {
+    return this.askers.size === 0;
+  }
+
+  end(): void {
     this.worker.terminate();
-    return true;
   }
 
   ask(asker: Asker, name: TaskName, rest: unknown[]): void {
@@ -67,22 +78,28 @@ class LiveThreadLink {
   }
 }
 
-const links = new Map<LiveSample, LiveThreadLink>();
+/** By the sample's own maps: what comes to a sample later is sent to the thread that it has. */
+const links = new Map<Uint16Array, LiveThreadLink>();
 
 /** Joins the sample's thread, starting it for the first asker. */
 export function joinThread(sample: LiveSample, asker: Asker): void {
-  let link = links.get(sample);
-  if (!link) {
-    link = new LiveThreadLink(sample);
-    links.set(sample, link);
-  }
+  const link = links.get(sample.maps) ?? new LiveThreadLink();
+  links.set(sample.maps, link);
+  link.hold(sample);
   link.join(asker);
 }
 
+/** A thread ends once nobody has come back to it. */
 export function leaveThread(sample: LiveSample, asker: Asker): void {
-  if (links.get(sample)?.leave(asker)) links.delete(sample);
+  const link = links.get(sample.maps);
+  link?.leave(asker);
+  setTimeout(() => {
+    if (!link?.isAlone || links.get(sample.maps) !== link) return;
+    links.delete(sample.maps);
+    link.end();
+  });
 }
 
 export function askThread(sample: LiveSample, asker: Asker, name: TaskName, rest: unknown[]): void {
-  links.get(sample)?.ask(asker, name, rest);
+  links.get(sample.maps)?.ask(asker, name, rest);
 }
