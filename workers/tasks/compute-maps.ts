@@ -2,11 +2,10 @@ import { complete, hold, reportProgress } from '@/lib/queue/attempt';
 import { type JobPayload, jobKinds } from '@/lib/queue/kinds';
 import { inTransaction } from '@/models';
 import { type MapPlan, planMaps, type WantedMap } from '@/models/map-plan';
-import type { MapRecipe } from '@/models/map-recipe';
-import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
+import type { CompletedMap } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
 import { Stopped, type Work } from '../perform';
-import { ThreadFault } from '../pool';
+import { completeStars } from './complete-stars';
 import { linkMaps, markFailed, markWaiting, storeMaps } from './map-store';
 
 /** Few enough that progress is seen and a cancel is quick, enough that threads are not idle. */
@@ -83,38 +82,14 @@ async function computeMissing(
   }
   let done = plan.total - plan.missing.length;
   await inLanes(batches, work.pool.threads + 1, async (batch) => {
-    const answers = await completeBatch(work, plan.recipe, batch);
+    const stars = batch.map(([{ star }]) => star);
+    const answers = await completeStars(work, plan.recipe, plan.recipe.grid, stars);
     // Counted where the row is locked, so that progress never runs backwards.
     await storeBatch(work, plan, batch, answers, failed, () => {
       done += batch.flat().length;
       return done;
     });
   });
-}
-
-async function completeBatch(
-  work: Work,
-  recipe: MapRecipe,
-  batch: WantedMap[][],
-): Promise<CompletedMap[]> {
-  const { pool, signal } = work;
-  const { cooling, grid, settings } = recipe;
-  const run = (groups: WantedMap[][]) =>
-    pool.run<CompleteMapsInput, CompletedMap[]>(
-      'complete-maps',
-      { stars: groups.map(([{ star }]) => star), cooling, grid, settings },
-      { signal },
-    );
-  try {
-    return await run(batch);
-  } catch (error) {
-    if (!(error instanceof ThreadFault)) throw error;
-    if (batch.length === 1) return [{ fault: error.message }];
-  }
-  // One star brought the thread down: the others of its task must not suffer.
-  const answers: CompletedMap[] = [];
-  for (const group of batch) answers.push(...(await completeBatch(work, recipe, [group])));
-  return answers;
 }
 
 async function storeBatch(

@@ -2,9 +2,8 @@ import { hold } from '@/lib/queue/attempt';
 import type { MapGrid, StarInputs } from '@/lib/sensitivity';
 import { CompletenessMapRow, inTransaction } from '@/models';
 import type { MapRecipe } from '@/models/map-recipe';
-import type { CompletedMap, CompleteMapsInput } from '../compute/complete-maps';
 import { inLanes } from '../lanes';
-import { ThreadFault } from '../pool';
+import { completeStars } from './complete-stars';
 import { type MapToStore, storeMaps } from './map-store';
 import { combineRows, type Rule } from './run-maps';
 import type { StudyWork } from './study-context';
@@ -42,11 +41,33 @@ async function findMissing<Wanted extends { digest: string }>(
   return [...once.values()];
 }
 
-async function storeOne({ work, collaborationId }: StudyWork, map: MapToStore): Promise<void> {
+async function store({ work, collaborationId }: StudyWork, maps: MapToStore[]): Promise<void> {
   await inTransaction(async (transaction) => {
     await hold(transaction, work.attempt);
-    await storeMaps(collaborationId, [map], transaction);
+    await storeMaps(collaborationId, maps, transaction);
   });
+}
+
+/** Few enough that progress is seen and a stop is quick, enough that storing does not rule the time. */
+const STARS_PER_TASK = 12;
+
+/** Maps that are made alike, so many at a time. */
+function batchesOf(maps: NewMap[]): NewMap[][] {
+  const alike: NewMap[][] = [];
+  for (const map of maps) {
+    const isAlike = ([{ recipe, grid }]: NewMap[]) =>
+      recipe.cooling === map.recipe.cooling &&
+      recipe.settings === map.recipe.settings &&
+      grid === map.grid;
+    const others = alike.find(isAlike);
+    if (others) others.push(map);
+    else alike.push([map]);
+  }
+  return alike.flatMap((all) =>
+    Array.from({ length: Math.ceil(all.length / STARS_PER_TASK) }, (_, i) =>
+      all.slice(i * STARS_PER_TASK, (i + 1) * STARS_PER_TASK),
+    ),
+  );
 }
 
 /**
@@ -64,30 +85,21 @@ export async function ensureMaps(
   const total = new Set(wanted.map(({ digest }) => digest)).size;
   let done = total - missing.length;
   await given.report(stage, done, total);
-  await inLanes(missing, work.pool.threads + 1, async (map) => {
-    const answer = await completeOne(given, map);
-    if ('fault' in answer) faults.set(map.digest, `${map.star.name}: ${answer.fault}`);
-    else await storeOne(given, { ...map.grid, ...answer, digest: map.digest, inputs: map.inputs });
-    done++;
+  await inLanes(batchesOf(missing), work.pool.threads + 1, async (batch) => {
+    const [{ recipe, grid }] = batch;
+    const stars = batch.map(({ star }) => star);
+    const answers = await completeStars(work, recipe, grid, stars);
+    const made = batch.flatMap(({ digest, inputs, star }, i) => {
+      const answer = answers[i];
+      if (!('fault' in answer)) return [{ ...grid, ...answer, digest, inputs }];
+      faults.set(digest, `${star.name}: ${answer.fault}`);
+      return [];
+    });
+    await store(given, made);
+    done += batch.length;
     await given.report(stage, done, total);
   });
   return faults;
-}
-
-async function completeOne({ work }: StudyWork, map: NewMap): Promise<CompletedMap> {
-  const { star, grid, recipe } = map;
-  const { cooling, settings } = recipe;
-  try {
-    const [answer] = await work.pool.run<CompleteMapsInput, CompletedMap[]>(
-      'complete-maps',
-      { stars: [star], cooling, grid, settings },
-      { signal: work.signal },
-    );
-    return answer;
-  } catch (error) {
-    if (error instanceof ThreadFault) return { fault: error.message };
-    throw error;
-  }
 }
 
 /** Sees to it that every wanted combination of stored maps is stored. */
@@ -101,6 +113,6 @@ export async function ensureCombinations(
       where: { collaborationId, digest: parts },
       order: [['digest', 'ASC']],
     });
-    await storeOne(given, { ...combineRows(rows, rule), digest, inputs });
+    await store(given, [{ ...combineRows(rows, rule), digest, inputs }]);
   }
 }
