@@ -5,7 +5,16 @@ import type { RunInputs } from '@/lib/schemas/runs';
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
-import type { FurtherMaps } from './live-stacks';
+
+/** Maps of a sample's stars under other ages and cooling models. */
+export interface FurtherMaps {
+  /** Of every star, in sigma of its own age, increasing. */
+  ageShifts: number[];
+  /** `as-run` first. */
+  models: string[];
+  /** By model, then by shift; each as the sample's own. Undefined: not fetched, or not to be made. */
+  stacks: (Uint16Array | undefined)[][];
+}
 
 /** What a run was made from, as the live controls need it. */
 export interface LiveSample {

@@ -1,16 +1,6 @@
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { LiveSample } from './live-sample';
 
-/** Maps of a sample's stars under other ages and cooling models. */
-export interface FurtherMaps {
-  /** Of every star, in sigma of its own age, increasing. */
-  ageShifts: number[];
-  /** `as-run` first. */
-  models: string[];
-  /** By model, then by shift; each as the sample's own. Undefined: not fetched, or not to be made. */
-  stacks: (Uint16Array | undefined)[][];
-}
-
 /** Ages and cooling model that a limit is asked under; left out: those of the run. */
 export interface Under {
   /** In sigma of each star's own age, positive for older. */
