@@ -4,7 +4,7 @@ import { fromLogIndex } from '@/lib/population';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
-import type { Under } from './live-stacks';
+import type { Under } from './under';
 
 /** Everything that follows a control at once, without a run. */
 export interface LiveSetting {

@@ -1,15 +1,6 @@
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { LiveSample } from './live-sample';
-
-/** Ages and cooling model that a limit is asked under; left out: those of the run. */
-export interface Under {
-  /** In sigma of each star's own age, positive for older. */
-  ageShift?: number;
-  cooling?: string;
-}
-
-export const isAsRun = ({ ageShift = 0, cooling = COOLING_AS_RUN }: Under): boolean =>
-  ageShift === 0 && cooling === COOLING_AS_RUN;
+import { isAsRun, type Under } from './under';
 
 /** Stored maps with their share in what lies between them; the shares sum to 1. */
 export interface SharedStack {

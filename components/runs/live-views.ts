@@ -14,7 +14,8 @@ import {
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { MapGrid } from '@/lib/sensitivity';
 import type { LiveSample } from './live-sample';
-import { stacksUnder, type Under } from './live-stacks';
+import { stacksUnder } from './live-stacks';
+import type { Under } from './under';
 
 const fieldsAlong = {
   mass: ['massMinMjup', 'massMaxMjup', 'massIndex'],

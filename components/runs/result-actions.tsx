@@ -1,48 +1,21 @@
 'use client';
 
-import { useRouter } from 'next/navigation';
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import dynamic from 'next/dynamic';
 import { copyAnalysis } from '@/components/hooks/use-analyses';
-import { useEditing } from '@/components/hooks/use-editing';
 import { startRun } from '@/components/hooks/use-runs';
 import { Button } from '@/components/ui/button';
-import { Dialog } from '@/components/ui/dialog';
-import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { LinkButton } from '@/components/ui/link-button';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
+import type { ChangeActionsProps } from './change-actions';
 import { ExportMenu } from './export-menu';
-import type { LiveSetting } from './live-setting';
-import { recipeWords } from './recipe-words';
-import { copyAndRun, recipeOf, saveAndRun } from './save-setting';
+import { type KeptActionsProps, mayChange, nextNumber, useWork, WAIT } from './result-work';
 
-interface KeptActionsProps {
-  collaboration: string;
-  analysis: AnalysisView;
-  /** Newest finished run. */
-  run?: RunSummary;
-  /** A run is on its way. */
-  isBusy: boolean;
-  /** At the foot of a narrow screen only what a thumb needs. */
-  placement: 'head' | 'foot';
-  onSaved(): void;
-}
+const ChangeActions = dynamic(async () => (await import('./change-actions')).ChangeActions);
 
-interface ResultActionsProps extends KeptActionsProps {
-  /** The setting at the moment of the press: it moves too often to be handed down. */
-  settingNow(): LiveSetting;
-  /** It asks for other ages or another cooling model, which no run can have. */
-  isWhatIf: boolean;
+interface ResultActionsProps extends ChangeActionsProps {
   isUnsaved: boolean;
-  onUndo(): void;
 }
-
-const WAIT = 'A run is on its way: wait for it or stop it first.';
-const WHAT_IF =
-  'Other ages and cooling models are looked at here and recorded with their own question. To make a run of them, adopt ages under Stars or give the surveys the cooling model.';
-const mayChange = ({ can }: AnalysisView) => can.change && can.run;
-const nextNumber = ({ runs }: AnalysisView) => (runs[0]?.number ?? 0) + 1;
 
 /** What becomes of a change, and what may be done with a result. */
 export function ResultActions(props: ResultActionsProps) {
@@ -51,114 +24,6 @@ export function ResultActions(props: ResultActionsProps) {
     <ChangeActions {...kept} {...{ settingNow, isWhatIf, onUndo }} />
   ) : (
     <KeptActions {...kept} />
-  );
-}
-
-type Work = 'save' | 'copy' | 'run';
-/** In place of a key: nothing was stored, and the person decides. */
-const HELD = Symbol('held');
-
-/** One piece of work at a time; a key that it answers is where the person goes on. */
-function useWork(collaboration: string, onSaved: () => void) {
-  const router = useRouter();
-  const [work, setWork] = useState<Work>();
-  const [problem, setProblem] = useState<string>();
-  const perform = async (kind: Work, task: () => Promise<string | typeof HELD | undefined>) => {
-    setWork(kind);
-    setProblem(undefined);
-    try {
-      const key = await task();
-      if (key === HELD) return;
-      if (key !== undefined) router.push(`/${collaboration}/analyses/${key}`);
-      else onSaved();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setWork(undefined);
-    }
-  };
-  const dialog = (
-    <Dialog
-      isOpen={problem !== undefined}
-      onClose={() => setProblem(undefined)}
-      title="It was not done"
-      actions={
-        <Button variant="primary" onClick={() => setProblem(undefined)}>
-          Back to the result
-        </Button>
-      }
-    >
-      <p>{problem}</p>
-    </Dialog>
-  );
-  return { work, perform, dialog };
-}
-
-function ChangeActions(props: Omit<ResultActionsProps, 'isUnsaved'>) {
-  const { collaboration, analysis, settingNow, isBusy, onUndo, onSaved } = props;
-  const isFoot = props.placement === 'foot';
-  const { work, perform, dialog } = useWork(collaboration, onSaved);
-  const isOwn = mayChange(analysis);
-  const whatIf = props.isWhatIf ? WHAT_IF : undefined;
-  const next = nextNumber(analysis);
-  // Drawn from the first change on: this recipe is the one that the change began from.
-  const editing = useEditing(analysis.recipe);
-  const save = () =>
-    perform('save', async () => {
-      const setting = settingNow();
-      const mine = await recipeOf(editing.opened(), setting);
-      const isStored = await editing.attempt(mine, (recipe) =>
-        saveAndRun(collaboration, { ...analysis, recipe }, setting),
-      );
-      return isStored ? undefined : HELD;
-    });
-  const saveCopy = () => perform('copy', () => copyAndRun(collaboration, analysis, settingNow()));
-  return (
-    <>
-      <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>
-        {isFoot ? <span className="sr-only">Undo</span> : 'Undo'}
-      </Button>
-      {analysis.can.copy && !(isFoot && isOwn) && (
-        <Button
-          icon="copy"
-          variant={isOwn ? 'normal' : 'primary'}
-          onClick={saveCopy}
-          isBusy={work === 'copy'}
-          disabledReason={whatIf}
-        >
-          Save as copy
-        </Button>
-      )}
-      {isOwn && (
-        <Button
-          variant="primary"
-          className={isFoot ? '' : 'max-md:hidden'}
-          onClick={save}
-          isBusy={work === 'save'}
-          disabledReason={whatIf ?? (isBusy ? WAIT : undefined)}
-        >
-          {isFoot ? `Run ${next}` : `Save as run ${next}`}
-        </Button>
-      )}
-      {dialog}
-      <Dialog
-        isOpen={editing.conflict !== null}
-        onClose={editing.leave}
-        title={`${analysis.key} is another one by now`}
-        actions={<Button onClick={editing.leave}>Back to the result</Button>}
-      >
-        <ChangedNotice
-          editing={editing}
-          words={(recipe) => recipeWords(recipe, analysis)}
-          onTake={() => {
-            editing.leave();
-            onUndo();
-            onSaved();
-          }}
-          onKeep={() => void save()}
-        />
-      </Dialog>
-    </>
   );
 }
 

@@ -27,16 +27,15 @@ import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
-import { AgesCoolingOffer } from './ages-cooling-offer';
 import { ChecksStrip } from './checks-strip';
 import { furtherOf, type LiveSample, sampleOf } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
-import { isAsRun } from './live-stacks';
 import { posteriorData } from './posterior-data';
 import { ProvenanceSection } from './provenance';
 import { conditionRows, ResultStatement } from './result-statement';
 import { runFigures } from './run-figures';
 import { type ShownResult, showResult } from './shown-result';
+import { isAsRun } from './under';
 import { useAnnounced } from './use-announced';
 import { useLiveResult } from './use-live-result';
 import { useLiveTask } from './use-live-task';
@@ -49,6 +48,9 @@ const PosteriorChart = dynamic(
 const ResultConsole = dynamic(async () => (await import('./result-console')).ResultConsole);
 const CalibrationCheck = dynamic(
   async () => (await import('@/components/studies/calibration/calibration-check')).CalibrationCheck,
+);
+const AgesCoolingOffer = dynamic(
+  async () => (await import('./ages-cooling-offer')).AgesCoolingOffer,
 );
 const ResultSections = dynamic(async () => (await import('./result-sections')).ResultSections);
 const FurtherQuestions = dynamic(

@@ -18,7 +18,7 @@ import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
 import { CandidateSwitch } from './candidate-switch';
 import { type Consequences, lawsOffered, priorChosen } from './consequences';
-import { formatShift, modelLabel, shiftsOf } from './input-words';
+import { formatShift, modelLabel, shiftsOf } from './input-choices';
 import { type LiveSetting, tidy, withInputs, withLikelihood } from './live-setting';
 import { TRACK, trackOf } from './tracks';
 

@@ -14,12 +14,12 @@ import type { RunView } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
-import { isAsRun } from './live-stacks';
 import { ResultActions } from './result-actions';
 import { ResultBody } from './result-body';
 import { RunNotices } from './run-notices';
 import { recipeOfRun } from './run-recipe';
 import { isFinished, isOnItsWay } from './run-standing';
+import { isAsRun } from './under';
 
 /** Each analysis shows one of these, and a run on its way only some. */
 const NoRunPlate = dynamic(async () => (await import('./no-run-plate')).NoRunPlate);

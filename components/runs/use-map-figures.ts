@@ -4,13 +4,14 @@ import { useMemo } from 'react';
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { MapData } from '@/components/charts/map-contours';
 import { useCalm } from '@/components/hooks/use-calm';
+import { useLoaded } from '@/components/hooks/use-loaded';
 import { populationWeights } from '@/lib/population';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
-import { isAsRun, sampleUnder } from './live-stacks';
 import { orNull } from './or-null';
 import { depthOf, meanOfSums, profileAlong, sumBySurvey } from './survey-sums';
+import { isAsRun } from './under';
 
 /** The mean map and the depth by survey, as a run stored them. */
 export function useStoredMap(result: RunResult, inputs: RunInputs) {
@@ -45,7 +46,11 @@ export function useMapFigures(
     useMemo(() => ({ ageShift, cooling }), [ageShift, cooling]),
     PACE,
   );
-  const moved = useMemo(() => sample && orNull(() => sampleUnder(sample, under)), [sample, under]);
+  const engine = useLoaded('live engine', () => import('./live-engine'));
+  const moved = useMemo(
+    () => (isAsRun(under) ? sample : sample && orNull(() => engine?.sampleUnder(sample, under))),
+    [sample, under, engine],
+  );
   const sums = useMemo(() => moved && sumBySurvey(moved, inputs.surveys), [moved, inputs]);
   const map = useMemo(
     () =>

@@ -53,6 +53,9 @@ test('ages and cooling model are moved under the hand, come back from the addres
 test('what is kept to compare with comes back with the address', async ({ page }) => {
   await signIn(page, 'statistician');
   await page.goto(`${LAB}/analyses/A-1`);
+  // Until then the page does not listen.
+  const index = page.getByRole('slider', { name: /^Mass index/ });
+  await expect(index).toHaveAttribute('aria-valuetext', /limit below \d/);
   const choice = page.getByRole('combobox', { name: 'Limit without some stars' });
   await choice.selectOption({ label: 'all 2 hosts of detections' });
   await page.getByRole('button', { name: 'Keep as a comparison' }).click();

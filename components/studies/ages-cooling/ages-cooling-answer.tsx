@@ -2,7 +2,7 @@
 
 import Link from 'next/link';
 import { AgeShiftChart } from '@/components/charts/age-shift-chart';
-import { modelLabel } from '@/components/runs/input-words';
+import { modelLabel } from '@/components/runs/input-choices';
 import { StateMark } from '@/components/ui/state-mark';
 import { describeLevel } from '@/lib/inference';
 import { AnswerNotes } from '../answer-notes';

@@ -1,12 +1,12 @@
 import type { Actor } from '@/lib/access/actor';
 import { type StudySettings, studySettingsSchema } from '@/lib/schemas/study-settings';
+import { listCoolingTables } from '@/lib/services/cooling-tables';
 import { startStudy } from '@/lib/services/studies';
 
 /** What a referee would ask of the lead analysis; every answer comes from the engine. */
 const referee: unknown[] = [
   { kind: 'influence' },
   { kind: 'systematics' },
-  { kind: 'ages-cooling' },
   { kind: 'calibration' },
   { kind: 'overlap-rules' },
   { kind: 'limit-map' },
@@ -32,8 +32,13 @@ export async function askFurther(
   populationIds: string[],
   finish: (jobId: string) => Promise<void>,
 ): Promise<void> {
+  // One other model: the demonstration is made anew before each of many tests.
+  const cold = (await listCoolingTables(actor)).find(
+    ({ startCondition }) => startCondition === 'cold',
+  );
   const settings: StudySettings[] = [
     ...referee,
+    { kind: 'ages-cooling', coolingTableIds: cold ? [cold.id] : [] },
     { kind: 'population-comparison', populationIds },
     planned,
   ].map((question) => studySettingsSchema.parse(question));

@@ -9,9 +9,10 @@ import {
   settingToQuery,
   withInputs,
 } from '@/components/runs/live-setting';
-import { sampleUnder, type Under } from '@/components/runs/live-stacks';
+import { sampleUnder } from '@/components/runs/live-stacks';
 import { LiveViews } from '@/components/runs/live-views';
 import { meanOfSums, sumBySurvey } from '@/components/runs/survey-sums';
+import type { Under } from '@/components/runs/under';
 import { answerQuestion, viewPopulation } from '@/lib/inference';
 import { AGE_SHIFTS, COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import { computeCompletenessMap, encodeMap, type StarInputs } from '@/lib/sensitivity';
