@@ -11,7 +11,10 @@ import type { ChangeActionsProps } from './change-actions';
 import { ExportMenu } from './export-menu';
 import { type KeptActionsProps, mayChange, nextNumber, useWork, WAIT } from './result-work';
 
-const ChangeActions = dynamic(async () => (await import('./change-actions')).ChangeActions);
+// With a waiting picture of its own it does not hold up the change that it is loaded for.
+const ChangeActions = dynamic(async () => (await import('./change-actions')).ChangeActions, {
+  loading: () => null,
+});
 
 interface ResultActionsProps extends ChangeActionsProps {
   isUnsaved: boolean;
