@@ -1,6 +1,6 @@
 'use client';
 
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import useSWR from 'swr';
 import type { RunView } from '@/lib/schemas/runs';
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
@@ -59,6 +59,9 @@ export function useAgesCooling(
     return study?.result?.kind === 'ages-cooling' ? { id: study.id, result: study.result } : null;
   }, [isKnown, known, study]);
 
+  // Once they are there they stay: a control may leave again.
+  const [keepsAll, setKeepsAll] = useState(wantsAll);
+  if (wantsAll && !keepsAll) setKeepsAll(true);
   const isFirst = ({ cooling, age }: Wanted) => cooling === COOLING_AS_RUN || age === 0;
   const wanted = answer && isReady ? wantedOf(answer) : [];
   const first = useStacks(collaboration, run, answer?.id, wanted.filter(isFirst));
@@ -66,7 +69,7 @@ export function useAgesCooling(
     collaboration,
     run,
     answer?.id,
-    wantsAll && first.data ? wanted.filter((one) => !isFirst(one)) : [],
+    keepsAll && first.data ? wanted.filter((one) => !isFirst(one)) : [],
   );
   const stacks = useMemo(
     () => [...(first.data ?? []), ...(rest.data ?? [])],

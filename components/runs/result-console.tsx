@@ -1,49 +1,32 @@
 'use client';
 
 import { type ReactNode, useState } from 'react';
-import { NumberEntry } from '@/components/analyses/number-entry';
-import { likelihoodOptions, type PriorLaw, priorOptions } from '@/components/analyses/prior-choice';
 import { RangeControl } from '@/components/charts/range-control';
 import { TraceSlider } from '@/components/charts/trace-slider';
 import { AxisRange, formatIndex, MassRange } from '@/components/populations/law-notation';
-import { ConsequenceSwitch, type SwitchOption } from '@/components/ui/consequence-switch';
 import { Console } from '@/components/ui/console';
 import { TextAction } from '@/components/ui/text-action';
-import { describeLevel, type RateQuantity } from '@/lib/inference';
+import { describeLevel } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
-import { CandidateSwitch } from './candidate-switch';
-import { type Consequences, lawsOffered, priorChosen } from './consequences';
-import { formatShift, modelLabel, shiftsOf } from './input-choices';
-import { type LiveSetting, tidy, withInputs, withLikelihood } from './live-setting';
+import { formatShift, shiftsOf } from './input-choices';
+import { type LiveSetting, tidy, withInputs } from './live-setting';
+import { ResultSwitches, type ResultSwitchesProps } from './result-switches';
 import { TRACK, trackOf } from './tracks';
 
-interface ResultConsoleProps {
-  setting: LiveSetting;
-  saved: LiveSetting;
-  quantity: RateQuantity;
+interface ResultConsoleProps extends Omit<ResultSwitchesProps, 'further'> {
   grid: MapGrid;
-  /** Undefined until the maps of the run are there; null where the setting has none. */
-  consequences: Consequences | null | undefined;
   profiles?: { mass: Float64Array; semiMajorAxis: Float64Array };
-  /** Candidates without an answer in the sample. */
-  candidates: number;
-  /** Other ages and cooling models, where maps are kept for them. */
-  inputs?: AgesCoolingAnswer;
-  /** In the place of their controls, where none are. */
+  /** In the place of the controls of ages and cooling, where no maps are kept for them. */
   offer?: ReactNode;
-  /** "2 vetted": what counting them means here. */
-  countedLabel: string;
-  onSetting(setting: LiveSetting): void;
 }
 
 /** Ranges, indices and level over their consequences, then the switches that carry theirs. */
 export function ResultConsole(props: ResultConsoleProps) {
-  const { setting, saved, quantity, grid, consequences, profiles, countedLabel, onSetting } = props;
+  const { setting, saved, quantity, grid, consequences, profiles, onSetting } = props;
   const [isFull, setFull] = useState(false);
   const { definition } = setting;
   const further = isFull ? '' : 'max-md:hidden';
@@ -55,10 +38,6 @@ export function ResultConsole(props: ResultConsoleProps) {
         ? formatPercent(value)
         : formatSignificant(100 * value, 2)
       : 'no limit';
-  const consequence = (value: number | undefined) => {
-    if (consequences === undefined) return 'pending';
-    return value === undefined ? undefined : formatSignificant(100 * value, 2);
-  };
   const levelWords = `at ${describeLevel(setting.credibleLevel).replace('\u2009%', ' per cent')}`;
 
   const index = (
@@ -87,90 +66,13 @@ export function ResultConsole(props: ResultConsoleProps) {
     );
   };
   const [levelMin, levelMax] = trackOf(TRACK.level, setting.credibleLevel, saved.credibleLevel);
-  const laws = lawsOffered(setting, saved);
-  const models = props.inputs?.result.models ?? [];
 
   return (
     <Console
       columns={props.inputs ? 6 : 5}
       foot={
         <>
-          <ConsequenceSwitch
-            label="Detections counted"
-            help="detection"
-            value={setting.detections}
-            onChange={(detections) => onSetting({ ...setting, detections })}
-            options={[
-              {
-                value: 'counted',
-                label: countedLabel,
-                consequence: consequence(consequences?.switches.detections.counted),
-              },
-              {
-                value: 'none',
-                label: 'none',
-                consequence: consequence(consequences?.switches.detections.none),
-              },
-            ]}
-          />
-          {props.candidates > 0 && (
-            <div className={`max-md:w-full ${further}`}>
-              <CandidateSwitch
-                setting={setting}
-                saved={saved}
-                consequence={(choice) => consequence(consequences?.switches.candidates[choice])}
-                onSetting={onSetting}
-              />
-            </div>
-          )}
-          {models.length > 1 && (
-            <div className={`max-md:w-full ${further}`}>
-              <ConsequenceSwitch
-                label="Cooling model"
-                help="cooling-model"
-                value={setting.cooling ?? COOLING_AS_RUN}
-                onChange={(cooling) => onSetting(withInputs(setting, { cooling }))}
-                options={models.map((model) => ({
-                  value: model.model,
-                  label: <span title={model.name}>{modelLabel(model, models)}</span>,
-                  consequence: consequence(consequences?.switches.cooling[model.model]),
-                }))}
-              />
-            </div>
-          )}
-          <ConsequenceSwitch
-            label="Likelihood"
-            help="likelihood"
-            value={setting.likelihood}
-            onChange={(likelihood) => onSetting(withLikelihood(setting, likelihood, saved))}
-            options={withConsequences(likelihoodOptions, (value) =>
-              consequence(consequences?.switches.likelihood[value]),
-            )}
-          />
-          <div className={`max-md:w-full ${further}`}>
-            <ConsequenceSwitch
-              help="prior"
-              label={
-                quantity === 'host_fraction' ? (
-                  <>
-                    Prior on <i>f</i>
-                  </>
-                ) : (
-                  'Prior on the mean number'
-                )
-              }
-              value={setting.prior.law}
-              onChange={(law) => onSetting({ ...setting, prior: priorChosen(law, setting, saved) })}
-              options={withConsequences(priorOptions(laws).map(shortened), (value) =>
-                consequence(consequences?.switches.prior[value]),
-              )}
-            />
-          </div>
-          {setting.prior.law === 'log-uniform' && (
-            <div className={`w-28 ${further}`}>
-              <FloorEntry setting={setting} onSetting={onSetting} />
-            </div>
-          )}
+          <ResultSwitches {...props} further={further} />
           {props.offer !== undefined && (
             <div className={`max-md:w-full ${further}`}>{props.offer}</div>
           )}
@@ -289,39 +191,6 @@ function ControlCell({ className = '', children }: { className?: string; childre
   );
 }
 
-function FloorEntry({
-  setting,
-  onSetting,
-}: {
-  setting: LiveSetting;
-  onSetting(setting: LiveSetting): void;
-}) {
-  const { prior } = setting;
-  if (prior.law !== 'log-uniform') return null;
-  return (
-    <NumberEntry
-      label="Floor"
-      value={prior.min}
-      isAllowed={(min) => min > 0 && min < prior.max}
-      expected={`Above 0, below ${prior.max}.`}
-      onValue={(min) => onSetting({ ...setting, prior: { ...prior, min } })}
-    />
-  );
-}
-
-/** Four options with their limits share 346 px: the longest name is cut for the eye alone. */
-function shortened(option: SwitchOption<PriorLaw>): SwitchOption<PriorLaw> {
-  if (option.value !== 'log-uniform') return option;
-  return {
-    ...option,
-    label: (
-      <>
-        log<span className="max-md:sr-only">-uniform</span>
-      </>
-    ),
-  };
-}
-
 /** The axis of a control is the map's own, unless the range reaches past it. */
 function boundsOf(nodes: Float64Array, min: number, max: number): [number, number] {
   return [Math.min(nodes[0], min), Math.max(nodes[nodes.length - 1], max)];
@@ -347,11 +216,4 @@ function shiftEnds(inputs: AgesCoolingAnswer, { cooling, ageShift = 0 }: LiveSet
 
 function percent({ values, limits }: { values: number[]; limits: number[] }) {
   return { values: values.map((level) => 100 * level), limits };
-}
-
-function withConsequences<Value extends string>(
-  options: SwitchOption<Value>[],
-  of: (value: Value) => string | undefined,
-): SwitchOption<Value>[] {
-  return options.map((option) => ({ ...option, consequence: of(option.value) }));
 }
