@@ -1,7 +1,7 @@
 import { answer } from './answer';
 import { apiPath, withQuery } from './api-path';
 import { ApiProblem } from './api-problem';
-import { type AnswerSchema, request, requestTagged } from './request';
+import { type AnswerSchema, request, requestNothing, requestTagged } from './request';
 
 /** Somebody changed the same thing since it was opened: what stands there now, and who was last. */
 export class ChangedMeanwhile<Part = unknown> extends ApiProblem {
@@ -14,7 +14,7 @@ export class ChangedMeanwhile<Part = unknown> extends ApiProblem {
       title: 'Changed meanwhile',
       status: 412,
       code: 'changed-meanwhile',
-      detail: `${lastWords(last)} Nothing was stored: look at it as it is now, then decide.`,
+      detail: `${lastWords(last)} Nothing was done: look at it as it is now, then decide.`,
     });
     this.name = 'ChangedMeanwhile';
     this.now = now;
@@ -70,25 +70,47 @@ export function isSame(a: unknown, b: unknown): boolean {
 /**
  * Changes the thing at an address if what the form edits still is what the form was opened with.
  *
- * The thing is read anew. Where its part differs, nothing is sent; else the change is sent with the
- * tag of what was read, so that nobody comes between. What the form does not edit (a job that goes
- * on, a new run, another field) may have moved: then it is read and compared again.
- *
  * @throws ChangedMeanwhile with the part as it is now; ApiProblem for every other refusal
  */
-export async function change<Thing, Part, Answer>(
+export function change<Thing, Part, Answer>(
   path: string,
   thing: AnswerSchema<Thing>,
   asked: Change<Thing, Part, Answer>,
 ): Promise<Answer> {
+  const { body } = asked;
+  return whileSame(path, thing, asked, (ifMatch) =>
+    request(path, asked.answer, { method: 'PATCH', body, ifMatch }),
+  );
+}
+
+/** Deletes the thing at an address if it still is what was shown. @throws as `change` */
+export function removeShown<Thing, Part>(
+  path: string,
+  thing: AnswerSchema<Thing>,
+  shown: Opened<Thing, Part>,
+): Promise<void> {
+  return whileSame(path, thing, shown, (ifMatch) =>
+    requestNothing(path, { method: 'DELETE', ifMatch }),
+  );
+}
+
+/**
+ * Sends what somebody decided while they saw a part of a thing.
+ *
+ * The thing is read anew. Where its part differs, nothing is sent; else the decision is sent with the
+ * tag of what was read, so that nobody comes between. What they did not see (a job that goes on, a
+ * new run, another field) may have moved: then it is read and compared again.
+ */
+async function whileSame<Thing, Part, Answer>(
+  path: string,
+  thing: AnswerSchema<Thing>,
+  seen: Opened<Thing, Part>,
+  send: (ifMatch: string) => Promise<Answer>,
+): Promise<Answer> {
   for (let turn = 0; turn < TURNS; turn++) {
-    const etag = await requireSame(path, thing, asked);
+    const etag = await requireSame(path, thing, seen);
     try {
-      return await request(path, asked.answer, {
-        method: 'PATCH',
-        body: asked.body,
-        ifMatch: etag,
-      });
+      return await send(etag);
     } catch (reason) {
       if (!(reason instanceof ApiProblem) || reason.status !== 412) throw reason;
     }
@@ -98,7 +120,7 @@ export async function change<Thing, Part, Answer>(
     title: 'Changed meanwhile',
     status: 412,
     code: 'changed-meanwhile',
-    detail: 'It changes all the time just now, so nothing was stored. Try again in a moment.',
+    detail: 'It changes all the time just now, so nothing was done. Try again in a moment.',
   });
 }
 

@@ -9,9 +9,16 @@ interface Sent {
   signal?: AbortSignal;
 }
 
-/** What changes an existing thing names the state that it changes: `change` finds it. */
+/**
+ * What changes an existing thing, or deletes what several people write, names the state that it was
+ * shown in: `change` and `removeShown` find it.
+ */
 export type RequestOptions = Sent &
-  ({ method?: 'GET' | 'POST' | 'DELETE' } | { method: 'PATCH'; ifMatch: string });
+  (
+    | { method?: 'GET' | 'POST' }
+    | { method: 'DELETE'; ifMatch?: string }
+    | { method: 'PATCH'; ifMatch: string }
+  );
 
 /** A schema, or what loads it: asked for at the same time as the answer that it reads. */
 export type AnswerSchema<T> = ZodType<T> | (() => Promise<ZodType<T>>);
@@ -80,7 +87,7 @@ async function send(
   const headers: Record<string, string> = { accept };
   if (body !== undefined) headers['content-type'] = 'application/json';
   if (content !== undefined) headers['content-type'] = content.type;
-  if ('ifMatch' in options) headers['if-match'] = options.ifMatch;
+  if ('ifMatch' in options && options.ifMatch) headers['if-match'] = options.ifMatch;
   let response: Response;
   try {
     response = await fetch(path, {

@@ -4,8 +4,8 @@ import useSWR from 'swr';
 import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
 import { answer } from './answer';
 import { apiPath } from './api-path';
-import { change, requireSame } from './change';
-import { request, requestNothing } from './request';
+import { change, removeShown, requireSame } from './change';
+import { request } from './request';
 
 const POLL_MS = 1000;
 
@@ -77,6 +77,14 @@ export function copyAnalysis(
   });
 }
 
-export function removeAnalysis(collaboration: string, key: string): Promise<void> {
-  return requestNothing(apiPath(collaboration, 'analyses', key), { method: 'DELETE' });
+/** @throws ChangedMeanwhile where the recipe is not the one that was shown */
+export function removeAnalysis(
+  collaboration: string,
+  key: string,
+  shown: AnalysisRecipe,
+): Promise<void> {
+  return removeShown(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
+    part: (analysis) => analysis.recipe,
+    opened: shown,
+  });
 }

@@ -33,12 +33,3 @@ export function useJobs(collaboration: string) {
     status === 401 ? 'session' : status === 0 ? 'connection' : undefined;
   return { jobs: data, lost, mutate };
 }
-
-/** One job, asked for every second until it has ended. */
-export function useJob(collaboration: string, id: string | null, fallback?: JobView) {
-  return useSWR(
-    id === null ? null : apiPath(collaboration, 'jobs', id),
-    (path: string) => request(path, answer('jobSchema')),
-    { fallbackData: fallback, refreshInterval: (job) => (job && !isOpen(job) ? 0 : 1000) },
-  );
-}

@@ -6,7 +6,7 @@ import type { FreezeStanding, GuestLinkView, ReleaseView } from '@/lib/schemas/r
 import { answer } from './answer';
 import { apiPath } from './api-path';
 import { readProblem } from './api-problem';
-import { change } from './change';
+import { change, removeShown } from './change';
 import { request, requestNothing } from './request';
 
 const CHECK_MS = 2000;
@@ -74,8 +74,13 @@ export const updateRelease = <Draft>(
     answer: answer('releaseSchema'),
   });
 
-export const removeRelease = (collaboration: string, id: string) =>
-  requestNothing(apiPath(collaboration, 'releases', id), { method: 'DELETE' });
+/** @param part what of the draft was shown as `opened` */
+export const removeRelease = <Draft>(
+  collaboration: string,
+  id: string,
+  part: (release: ReleaseView) => Draft,
+  opened: Draft,
+) => removeShown(apiPath(collaboration, 'releases', id), answer('releaseSchema'), { part, opened });
 
 export const freezeRun = (
   collaboration: string,

@@ -1,6 +1,5 @@
 'use client';
 
-import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
@@ -12,7 +11,9 @@ import {
   withdrawRelease,
 } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
+import { DeleteForGood } from '@/components/ui/delete-for-good';
 import { Dialog } from '@/components/ui/dialog';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -26,6 +27,7 @@ import type { GuestLinkView, ReleaseView } from '@/lib/schemas/releases';
 import { DepositPart } from './deposit-part';
 import { GiveLink } from './give-link';
 import { GuestLinks } from './guest-links';
+import { draftOf } from './release-draft';
 import { ReleaseSteps } from './release-steps';
 import { shortDigest, stateWords } from './release-words';
 
@@ -48,12 +50,11 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
   const [isWithdrawing, setWithdrawing] = useState(false);
   const [reason, setReason] = useState('');
   const { kind, words } = stateWords[release.state];
-  const perform = async (name: string, task: () => Promise<ReleaseView | undefined>) => {
+  const perform = async (name: string, task: () => Promise<ReleaseView>) => {
     setBusy(name);
     setProblem(undefined);
     try {
-      const next = await task();
-      if (next) await mutate(next, { revalidate: false });
+      await mutate(await task(), { revalidate: false });
       return true;
     } catch (failure) {
       setProblem(sentenceOf(failure));
@@ -70,13 +71,6 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
     );
     if (isDone) setWithdrawing(false);
   };
-  const remove = () =>
-    void perform('remove', async () => {
-      await removeRelease(collaboration, release.id);
-      router.push(`/${collaboration}/releases`);
-      router.refresh();
-      return undefined;
-    });
   const isPublic = release.state === 'published' || release.state === 'withdrawn';
   return (
     <>
@@ -171,9 +165,16 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
           <div className="mt-5 flex flex-wrap gap-2">
             {release.can.withdraw && <Button onClick={() => setWithdrawing(true)}>Withdraw</Button>}
             {release.can.change && (
-              <Button variant="quiet" onClick={remove} isBusy={busy === 'remove'}>
-                Delete the draft
-              </Button>
+              <DeleteForGood
+                label="Delete the draft"
+                warning="The draft goes for good; its runs stay."
+                onDelete={() => removeRelease(collaboration, release.id, draftOf, draftOf(release))}
+                onDeleted={() => {
+                  router.push(`/${collaboration}/releases`);
+                  router.refresh();
+                }}
+                onRefused={() => void mutate()}
+              />
             )}
           </div>
           {release.state === 'published' && (

@@ -1,10 +1,13 @@
 'use client';
 
+import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { removeAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Button } from '@/components/ui/button';
+import { DeleteForGood } from '@/components/ui/delete-for-good';
 import { Notice } from '@/components/ui/notice';
 import { Conditions, Plate } from '@/components/ui/plate';
 import {
@@ -21,11 +24,13 @@ interface NoRunPlateProps {
   collaboration: string;
   analysis: AnalysisView;
   isOnItsWay: boolean;
-  onStarted(): void;
+  /** It was started, or it is not as it was shown. */
+  onChanged(): void;
 }
 
 /** The question stands, its answer does not yet: a dotted posterior and the way to it. */
-export function NoRunPlate({ collaboration, analysis, isOnItsWay, onStarted }: NoRunPlateProps) {
+export function NoRunPlate({ collaboration, analysis, isOnItsWay, onChanged }: NoRunPlateProps) {
+  const router = useRouter();
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<string>();
   const { recipe, population, surveys } = analysis;
@@ -36,7 +41,7 @@ export function NoRunPlate({ collaboration, analysis, isOnItsWay, onStarted }: N
     setProblem(undefined);
     try {
       await startRun(collaboration, analysis.key);
-      onStarted();
+      onChanged();
     } catch (reason) {
       setProblem(sentenceOf(reason));
     } finally {
@@ -96,7 +101,7 @@ export function NoRunPlate({ collaboration, analysis, isOnItsWay, onStarted }: N
             ]}
           />
           {!isOnItsWay && (
-            <div className="mt-6">
+            <div className="mt-6 flex flex-wrap items-start gap-x-2 gap-y-3">
               <Button
                 variant="primary"
                 onClick={run}
@@ -109,6 +114,18 @@ export function NoRunPlate({ collaboration, analysis, isOnItsWay, onStarted }: N
               >
                 Run
               </Button>
+              {analysis.can.remove && (
+                <DeleteForGood
+                  label="Delete the draft"
+                  warning="The draft goes for good, with any notes on it."
+                  onDelete={() => removeAnalysis(collaboration, analysis.key, recipe)}
+                  onDeleted={() => {
+                    router.push(`/${collaboration}/analyses`);
+                    router.refresh();
+                  }}
+                  onRefused={onChanged}
+                />
+              )}
             </div>
           )}
         </div>

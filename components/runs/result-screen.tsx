@@ -169,7 +169,7 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
           collaboration={collaboration}
           analysis={analysis}
           isOnItsWay={isOnItsWay(newest)}
-          onStarted={refresh}
+          onChanged={refresh}
         />
       )}
     </>

@@ -65,7 +65,7 @@ export function StoredResult(props: StoredResultProps) {
           collaboration={collaboration}
           analysis={analysis}
           isOnItsWay={isBusy}
-          onStarted={onChanged}
+          onChanged={onChanged}
         />
       )}
     </>

@@ -1,5 +1,7 @@
+import { removeStudy } from '@/components/hooks/use-studies';
 import { fingerprint } from '@/components/runs/time-words';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
+import { DeleteForGood } from '@/components/ui/delete-for-good';
 import { Conditions, conditionRow } from '@/components/ui/plate';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -40,14 +42,14 @@ export function AnswerConditions({ asked, settings }: { asked: AskedRun; setting
   );
 }
 
-/** From which run, by whom, with which fingerprints. */
-export function AnswerProvenance({
-  collaboration,
-  study,
-}: {
+interface AnswerProvenanceProps {
   collaboration: string;
   study: StudyView;
-}) {
+  onDeleted(): void;
+}
+
+/** From which run, by whom, with which fingerprints; and the way to delete it. */
+export function AnswerProvenance({ collaboration, study, onDeleted }: AnswerProvenanceProps) {
   const { inputs, run } = study;
   const day = useDay();
   const steps: ProvenanceStep[] = [
@@ -110,6 +112,16 @@ export function AnswerProvenance({
           ))}
         </dl>
       </details>
+      {study.can.remove && (
+        <div className="mt-4">
+          <DeleteForGood
+            label="Delete this answer"
+            warning="The answer goes for good, with every map that it keeps; the run stays."
+            onDelete={() => removeStudy(collaboration, study.id)}
+            onDeleted={onDeleted}
+          />
+        </div>
+      )}
     </section>
   );
 }

@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { cancelJob, retryJob } from '@/components/hooks/use-runs';
+import { removeStudy } from '@/components/hooks/use-studies';
 import { formatDuration } from '@/components/runs/time-words';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -60,10 +61,15 @@ export function QuestionProgress(props: QuestionProgressProps) {
   );
 }
 
+interface QuestionEndedProps extends QuestionProgressProps {
+  onDeleted(): void;
+}
+
 /** A question that ended without an answer: why, and what mends it. */
-export function QuestionEnded(props: QuestionProgressProps) {
-  const { collaboration, study, name, canStop, mend, onChanged } = props;
+export function QuestionEnded(props: QuestionEndedProps) {
+  const { collaboration, study, name, canStop, mend, onChanged, onDeleted } = props;
   const { perform, isBusy, problem } = useJobAction(onChanged);
+  const deletion = useJobAction(onDeleted);
   const wasStopped = study.job.status === 'cancelled';
   const fault = study.job.fault ?? 'It gave no reason.';
   return (
@@ -72,18 +78,29 @@ export function QuestionEnded(props: QuestionProgressProps) {
       title={`Question ${study.number}, ${name}, ${wasStopped ? 'was stopped' : 'has no answer'}.`}
       isAnnounced
       actions={
-        canStop ? (
-          <TextAction
-            icon="undo"
-            aria-disabled={isBusy}
-            onClick={() => perform(() => retryJob(collaboration, study.job.id))}
-          >
-            {wasStopped ? 'Compute it after all' : 'Retry'}
-          </TextAction>
-        ) : undefined
+        <>
+          {canStop && (
+            <TextAction
+              icon="undo"
+              aria-disabled={isBusy}
+              onClick={() => perform(() => retryJob(collaboration, study.job.id))}
+            >
+              {wasStopped ? 'Compute it after all' : 'Retry'}
+            </TextAction>
+          )}
+          {study.can.remove && (
+            <TextAction
+              aria-disabled={deletion.isBusy}
+              onClick={() => deletion.perform(() => removeStudy(collaboration, study.id))}
+            >
+              Delete the question
+            </TextAction>
+          )}
+        </>
       }
     >
       {problem ??
+        deletion.problem ??
         (wasStopped ? 'Nothing of it was stored.' : [fault, mend].filter(Boolean).join(' '))}
     </Notice>
   );

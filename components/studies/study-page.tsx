@@ -142,6 +142,7 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
                 canStop={canAsk}
                 mend="Change the settings above and ask again, or retry as it is."
                 onChanged={refresh}
+                onDeleted={refresh}
               />
             )}
             {(error ?? studyError) !== undefined && (
@@ -176,7 +177,14 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
                 </FigureFrame>
               </section>
               <AnswerConditions asked={answered} settings={settingsInWords(study.settings)} />
-              <AnswerProvenance collaboration={collaboration} study={study} />
+              <AnswerProvenance
+                collaboration={collaboration}
+                study={study}
+                onDeleted={() => {
+                  setChosenId(undefined);
+                  refresh();
+                }}
+              />
             </>
           ) : (
             <AnswerToCome isKnown={studies !== undefined} isExpected={shownId !== undefined} />

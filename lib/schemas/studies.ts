@@ -50,6 +50,7 @@ export const studySummarySchema = z.object({
   createdBy: z.string().nullable(),
   createdAt: moment,
   finishedAt: moment.nullable(),
+  can: z.object({ remove: z.boolean() }),
 });
 export type StudySummary = z.infer<typeof studySummarySchema>;
 

@@ -14,21 +14,13 @@ import type {
 } from '@/lib/schemas/studies';
 import type { StudySettings } from '@/lib/schemas/study-settings';
 import { ENGINE_VERSION } from '@/lib/sensitivity';
-import {
-  AnalysisRow,
-  database,
-  inTransaction,
-  JobRow,
-  PersonRow,
-  RunRow,
-  StudyRow,
-} from '@/models';
+import { AnalysisRow, database, inTransaction, JobRow, RunRow, StudyRow } from '@/models';
 import { digestOf } from '@/models/digest';
 import { recordAudit } from './audit';
 import { behindRow, type PageAsked } from './behind-row';
-import { describeJobs } from './jobs';
 import { findRun, type RunMaps, readStack } from './runs';
 import { refuseUnanswerable } from './study-checks';
+import { hasEnded, type Summarised, shownTo, summarise } from './study-summaries';
 import { studyNames } from './study-words';
 import { together } from './together';
 
@@ -40,54 +32,6 @@ const SEED_LENGTH = 16;
 /** Columns that only the view of one study needs are not read for lists. */
 const LISTED = { exclude: ['inputs', 'result'] };
 
-async function summarise(rows: StudyRow[]): Promise<StudySummary[]> {
-  if (rows.length === 0) return [];
-  const runs = await RunRow.findAll({
-    attributes: ['id', 'number', 'analysisId'],
-    where: { id: rows.map(({ runId }) => runId) },
-  });
-  const analyses = await AnalysisRow.findAll({
-    where: { id: runs.map(({ analysisId }) => analysisId) },
-  });
-  const people = await PersonRow.findAll({
-    attributes: ['id', 'name'],
-    where: { id: rows.flatMap(({ createdBy }) => createdBy ?? []) },
-  });
-  const jobs = await describeJobs(
-    await JobRow.findAll({ where: { id: rows.map(({ jobId }) => jobId) } }),
-  );
-  const byId = <Row extends { id: string }>(all: Row[]) => new Map(all.map((row) => [row.id, row]));
-  const [runOf, analysisOf, personOf, jobOf] = [
-    byId(runs),
-    byId(analyses),
-    byId(people),
-    byId(jobs),
-  ];
-  return rows.flatMap((row) => {
-    const run = runOf.get(row.runId);
-    const analysis = run && analysisOf.get(run.analysisId);
-    const job = jobOf.get(row.jobId);
-    // Deleted between the statements.
-    if (!run || !analysis || !job) return [];
-    return {
-      id: row.id,
-      number: row.number,
-      settings: row.settings,
-      run: {
-        id: run.id,
-        number: run.number,
-        analysisKey: `A-${analysis.number}`,
-        analysisName: analysis.name,
-      },
-      job,
-      headline: row.headline ?? null,
-      createdBy: personOf.get(row.createdBy ?? '')?.name ?? null,
-      createdAt: row.createdAt.toISOString(),
-      finishedAt: row.finishedAt?.toISOString() ?? null,
-    };
-  });
-}
-
 export async function listStudiesOfRun(
   actor: Actor,
   runId: string,
@@ -98,7 +42,7 @@ export async function listStudiesOfRun(
     where: { runId: run.id },
     order: [['number', 'DESC']],
   });
-  return { studies: await summarise(rows) };
+  return { studies: (await summarise(rows)).map((one) => shownTo(actor, one)) };
 }
 
 const NEWEST = {
@@ -116,13 +60,16 @@ export async function listStudies(
   demand(actor, 'read');
   const { collaborationId } = actor;
   const asked = JSON.stringify(query);
-  return together(`studies ${collaborationId} ${asked}`, () => readStudies(collaborationId, query));
+  const studies = await together(`studies ${collaborationId} ${asked}`, () =>
+    readStudies(collaborationId, query),
+  );
+  return { studies: studies.map((one) => shownTo(actor, one)) };
 }
 
 async function readStudies(
   collaborationId: string,
   { kind, limit, offset, after }: StudiesAsked,
-): Promise<{ studies: StudySummary[] }> {
+): Promise<Summarised[]> {
   const where: WhereOptions = {
     collaborationId,
     ...(kind && { kind }),
@@ -138,7 +85,7 @@ async function readStudies(
     limit,
     offset,
   });
-  return { studies: await summarise(rows) };
+  return summarise(rows);
 }
 
 /** A study of this collaboration, or the same "no such question" for absent and foreign. */
@@ -161,7 +108,7 @@ export async function getStudy(actor: Actor, id: string): Promise<StudyView> {
     rejectOnEmpty: true,
   });
   return {
-    ...summary,
+    ...shownTo(actor, summary),
     quantity: recipe.likelihood === 'host-fraction' ? 'host_fraction' : 'companions_per_star',
     credibleLevel: recipe.credibleLevel,
     seed: study.seed,
@@ -316,7 +263,7 @@ export async function startStudy(
   });
   const [summary] = await summarise([study]);
   if (!summary) throw new NotFound('further question');
-  return summary;
+  return shownTo(actor, summary);
 }
 
 /** Deletes a study and its job; one that is being computed is stopped first, by its own verb. */
@@ -329,7 +276,7 @@ export async function removeStudy(actor: Actor, id: string): Promise<void> {
       lock: transaction.LOCK.UPDATE,
       rejectOnEmpty: true,
     });
-    if (job.status === 'waiting' || job.status === 'running') {
+    if (!hasEnded(job.status)) {
       throw new Conflict('It is still being computed: stop it before you delete it');
     }
     await study.destroy({ transaction });

@@ -29,6 +29,35 @@ async function openFacts(page: Page) {
   };
 }
 
+test('a draft that somebody changed since is not deleted unseen', async ({ browser, baseURL }) => {
+  const page = await pageOf(browser, baseURL, 'owner');
+  const headers = { origin: new URL(page.url()).origin };
+  const api = `/api/v1/collaborations${LAB}/analyses`;
+  const { recipe } = await (await page.request.get(`${api}/A-1`)).json();
+  const data = { name: 'A draft of two people', recipe };
+  const made = await page.request.post(api, { headers, data });
+  expect(made.status()).toBe(201);
+  const { key } = await made.json();
+  await page.goto(`${LAB}/analyses/${key}`);
+  const first = page.getByRole('button', { name: 'Delete the draft' });
+  const second = page.getByRole('button', { name: 'Delete it' });
+  await expect(async () => {
+    await first.click();
+    await expect(second).toBeVisible({ timeout: 3000 });
+  }).toPass();
+  const change = { recipe: { ...recipe, credibleLevel: 0.68 } };
+  const changed = await page.request.patch(`${api}/${key}`, { headers, data: change });
+  expect(changed.status()).toBe(200);
+
+  await second.click();
+  await expect(page.getByText('Nothing was deleted.')).toBeVisible();
+  await expect(page.getByText('It was changed since this page was opened')).toBeVisible();
+  await expect(page.locator('dd', { hasText: /^68/ })).toBeVisible();
+  await second.click();
+  await page.waitForURL(`**${LAB}/analyses`);
+  expect((await page.request.get(`${api}/${key}`)).status()).toBe(404);
+});
+
 test('two people change one survey: the second is told, and nothing is lost', async ({
   browser,
   baseURL,

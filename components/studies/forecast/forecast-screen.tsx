@@ -1,5 +1,6 @@
 'use client';
 
+import { useRouter } from 'next/navigation';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudy } from '@/components/hooks/use-studies';
@@ -32,12 +33,17 @@ interface ForecastScreenProps {
 /** One forecast: its job while it is computed, then its answer and what that rests on. */
 export function ForecastScreen(props: ForecastScreenProps) {
   const { collaboration, analysis, run, runPopulation, canAsk } = props;
+  const router = useRouter();
   const { data: study = props.study, error, mutate } = useStudy(collaboration, props.study.id);
   const answered = useAnsweredRun({ collaboration, analysis, run, runPopulation, study });
   const answer = answered && answerOf('forecast', study, answered);
   const entry = kinds.forecast;
   const { settings, job } = study;
   if (settings.kind !== 'forecast' || !entry) return null;
+  const leave = () => {
+    router.push(`/${collaboration}/forecasts`);
+    router.refresh();
+  };
   const shared = {
     collaboration,
     study,
@@ -76,7 +82,11 @@ export function ForecastScreen(props: ForecastScreenProps) {
         )}
         {(job.status === 'waiting' || job.status === 'running') && <QuestionProgress {...shared} />}
         {(job.status === 'failed' || job.status === 'cancelled') && (
-          <QuestionEnded {...shared} mend="Change it and ask again, or retry as it is." />
+          <QuestionEnded
+            {...shared}
+            mend="Change it and ask again, or retry as it is."
+            onDeleted={leave}
+          />
         )}
         {answer && (
           <>
@@ -94,7 +104,7 @@ export function ForecastScreen(props: ForecastScreenProps) {
               asked={answer.asked}
               settings={`forecast, ${entry.settingsInWords(settings)}`}
             />
-            <AnswerProvenance collaboration={collaboration} study={study} />
+            <AnswerProvenance collaboration={collaboration} study={study} onDeleted={leave} />
           </>
         )}
         {!answer && job.status === 'done' && (

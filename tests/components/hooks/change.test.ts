@@ -2,7 +2,7 @@ import { readFileSync } from 'node:fs';
 import { afterEach, describe, expect, it, vi } from 'vitest';
 import { z } from 'zod';
 import { ApiProblem } from '@/components/hooks/api-problem';
-import { ChangedMeanwhile, change, isSame } from '@/components/hooks/change';
+import { ChangedMeanwhile, change, isSame, removeShown } from '@/components/hooks/change';
 import { takesIfMatch } from '@/lib/schemas/api-route';
 import { apiRoutes } from '@/lib/schemas/api-routes';
 
@@ -76,6 +76,26 @@ describe('a change of what a form was opened with', () => {
     expect(restless.length).toBeLessThanOrEqual(10);
   });
 
+  it('deletes only what was shown', async () => {
+    const shown = { part: ({ name }: z.infer<typeof thing>) => name, opened: 'Auk' };
+    const asked = serve(
+      read('Auk', 1),
+      refused(),
+      read('Auk', 2),
+      new Response(null, { status: 204 }),
+    );
+    await removeShown('/thing', thing, shown);
+    expect(asked.map(({ method, ifMatch }) => [method, ifMatch])).toEqual([
+      ['GET', null],
+      ['DELETE', '"Auk1"'],
+      ['GET', null],
+      ['DELETE', '"Auk2"'],
+    ]);
+    const other = serve(read('Gull', 2));
+    await expect(removeShown('/thing', thing, shown)).rejects.toBeInstanceOf(ChangedMeanwhile);
+    expect(other.map(({ method }) => method)).toEqual(['GET']);
+  });
+
   it('knows the same values in another order from others', () => {
     expect(isSame({ a: [1, { b: null }], c: undefined }, { a: [1, { b: null }] })).toBe(true);
     expect(isSame({ a: 1, b: 2 }, { b: 2, a: 1 })).toBe(true);
@@ -98,6 +118,7 @@ describe('every form that changes something', () => {
   const sources = import.meta.glob('/components/**/*.{ts,tsx}');
   // Parts of a file name their place by Upload-Offset, which is their condition.
   const changes = apiRoutes.filter(({ method, isUpload }) => method === 'patch' && !isUpload);
+  const decided = apiRoutes.filter((route) => takesIfMatch(route, apiRoutes));
   const templateOf = (path: string) => new RegExp(`^${path.replace(/\{\w+\}/g, '[^/]+')}$`);
 
   it('may say what it was opened with, wherever it is sent', () => {
@@ -117,7 +138,8 @@ describe('every form that changes something', () => {
     const reached = new Set<string>();
     for (const load of Object.values(hooks)) {
       for (const [name, hook] of Object.entries(await load())) {
-        if (typeof hook !== 'function' || !/\bchange\)?\(/.test(String(hook))) continue;
+        if (typeof hook !== 'function' || !/\b(change|removeShown)\)?\(/.test(String(hook)))
+          continue;
         const asked = serve();
         // Each is asked with words for everything: the address is all that is looked at.
         await Promise.resolve()
@@ -125,7 +147,7 @@ describe('every form that changes something', () => {
           .catch(() => undefined);
         expect(asked, name).toHaveLength(1);
         const [{ path, method }] = asked;
-        const route = changes.find((one) => templateOf(one.path).test(path.split('?')[0]));
+        const route = decided.find((one) => templateOf(one.path).test(path.split('?')[0]));
         expect([name, method, route !== undefined]).toEqual([name, 'GET', true]);
         reached.add(route?.path ?? '');
       }
