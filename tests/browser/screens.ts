@@ -63,7 +63,7 @@ export const labScreens = [
     'releases/new?run={run}',
     'releases/freeze/{run}',
     'releases/R-1',
-    'releases/R-1/edit',
+    'releases/R-2/edit',
     'exercises',
     'exercises/new',
     'exercises/E-1',
@@ -79,9 +79,9 @@ export const labScreens = [
 ];
 
 /** Where the id stands that an address has in braces. */
-const ids: Record<string, { route: string; list: string; field?: string }> = {
+const ids: Record<string, { route: string; list?: string; field?: string }> = {
   candidate: { route: 'candidates?limit=1', list: 'candidates' },
-  code: { route: 'releases', list: 'releases', field: 'code' },
+  code: { route: 'releases/R-1', field: 'code' },
   forecast: { route: 'studies?kind=forecast', list: 'studies' },
   run: { route: 'analyses/A-1', list: 'runs' },
   star: { route: 'stars?limit=1', list: 'stars' },
@@ -98,7 +98,8 @@ export async function addressOf(request: APIRequestContext, screen: string): Pro
   const { route, list, field = 'id' } = ids[name];
   // The server may close a connection that rested just as it is taken up again.
   const answer = await request.get(`/api/v1/collaborations${LAB}/${route}`, { maxRetries: 2 });
-  const id = (await answer.json())[list]?.[0]?.[field];
+  const body = await answer.json();
+  const id = (list === undefined ? body : body[list]?.[0])?.[field];
   if (typeof id !== 'string') throw new Error(`${route} tells no ${name}`);
   return screen.replace(`{${name}}`, id);
 }

@@ -11,7 +11,10 @@ interface DemoRelease {
   finish(jobId: string): Promise<void>;
 }
 
-/** Publishes the lead analysis the way that everybody does: frozen, signed twice, run again. */
+/**
+ * Publishes the lead analysis the way that everybody does: frozen, signed twice, run again. A second
+ * edition of it is begun, which waits for its signatures.
+ */
 export async function releaseLead({ actors, analysisId, finish }: DemoRelease): Promise<void> {
   const { author, statistician, owner } = actors;
   const run = await RunRow.findOne({
@@ -22,17 +25,22 @@ export async function releaseLead({ actors, analysisId, finish }: DemoRelease): 
   await freezeRun(author, run.id, {
     reason: 'Candidates inside the ranges wait for a second epoch; they are set aside.',
   });
-  const { id } = await createRelease(author, {
-    title: 'Giant planets on wide orbits around young stars',
+  const title = 'Giant planets on wide orbits around young stars';
+  const common = {
     authors: [owner, statistician, author].map(({ personName: name }) => ({
       name,
       affiliation: 'Breakwater collaboration',
     })),
-    abstract:
-      'Four invented surveys of young stars are taken together, each star once. Everything here is made up for the demonstration; the numbers come from the engine.',
-    licence: 'CC-BY-4.0',
+    licence: 'CC-BY-4.0' as const,
     note: 'Invented data: not for use in science.',
     runIds: [run.id],
+  };
+  const made =
+    'Four invented surveys of young stars are taken together, each star once. Everything here is made up for the demonstration; the numbers come from the engine.';
+  const { id } = await createRelease(author, {
+    ...common,
+    title,
+    abstract: made,
     replacesId: null,
   });
   await signOffRelease(statistician, id);
@@ -42,4 +50,10 @@ export async function releaseLead({ actors, analysisId, finish }: DemoRelease): 
   const { state } = await getRelease(owner, id);
   if (state !== 'checked') throw new Error(`the demonstration's release is ${state}`);
   await publishRelease(owner, id);
+  await createRelease(author, {
+    ...common,
+    title: `${title}: second edition`,
+    abstract: `${made} This edition is to say more of the candidates that were set aside.`,
+    replacesId: id,
+  });
 }
