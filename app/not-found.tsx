@@ -1,5 +1,5 @@
-import Link from 'next/link';
 import { Mark, Wordmark } from '@/components/ui/brand';
+import { Link } from '@/components/ui/link';
 import { Ruler } from '@/components/ui/log-ticks';
 
 export default function NotFoundPage() {

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { useMoment } from '@/components/ui/time-zone';
 import type { ActivityEntry } from '@/lib/schemas/activity';

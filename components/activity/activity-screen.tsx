@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { type ActivityFilter, fetchEarlier } from '@/components/hooks/use-activity';
 import { Button } from '@/components/ui/button';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import type { ActivityPage } from '@/lib/schemas/activity';

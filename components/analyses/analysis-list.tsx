@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { useAnalyses } from '@/components/hooks/use-analyses';
 import { EmptyState } from '@/components/ui/empty-state';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';

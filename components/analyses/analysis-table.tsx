@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useMemo } from 'react';
 import { IntervalAxis, IntervalMark, intervalMax } from '@/components/charts/intervals-on-axis';
 import { formatDuration } from '@/components/runs/time-words';
 import type { DataColumn, Facet } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
+import { Link } from '@/components/ui/link';
 import { JupiterMass } from '@/components/ui/notation';
 import { type StateKind, StateMark } from '@/components/ui/state-mark';
 import { describeLevel } from '@/lib/inference';

@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useSamplePreview, useSamples } from '@/components/hooks/use-samples';
+import { Link } from '@/components/ui/link';
 import { SelectField } from '@/components/ui/select-field';
 import type { SampleDefinition, SamplePreview } from '@/lib/schemas/samples';
 

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { GuideField } from '@/lib/schemas/api-guide';
 
@@ -38,7 +38,7 @@ export function FieldTable({ caption, fields, isSent = false }: FieldTableProps)
               {shape === null ? (
                 <code className="break-words">{type}</code>
               ) : (
-                <Link href={`/api-guide/shapes#${shape}`} prefetch={false}>
+                <Link href={`/api-guide/shapes#${shape}`}>
                   <code>{type}</code>
                 </Link>
               )}

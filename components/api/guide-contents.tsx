@@ -1,5 +1,5 @@
-import Link from 'next/link';
 import { Button } from '@/components/ui/button';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextField } from '@/components/ui/text-field';
@@ -32,21 +32,11 @@ export function GuideContents({ groups }: { groups: readonly GuideGroup[] }) {
     <div className="gap-x-14 lg:columns-2">
       {groups.map(({ noun, title, operations }) => (
         <section key={noun} className="mb-10 min-w-0 break-inside-avoid">
-          <SectionOpener
-            title={
-              <Link href={`/api-guide/${noun}`} prefetch={false}>
-                {title}
-              </Link>
-            }
-          />
+          <SectionOpener title={<Link href={`/api-guide/${noun}`}>{title}</Link>} />
           <ul>
             {operations.map(({ id, method, path, summary }) => (
               <li key={id} className="border-rule border-b py-1.5">
-                <Link
-                  href={`/api-guide/${noun}#${id}`}
-                  prefetch={false}
-                  className="block py-1 font-semibold"
-                >
+                <Link href={`/api-guide/${noun}#${id}`} className="block py-1 font-semibold">
                   {summary}
                 </Link>
                 <code className="break-words text-ink3 text-note">

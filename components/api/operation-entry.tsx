@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { GuideOperation } from '@/lib/schemas/api-guide';
 import { ApiPath } from './api-path';

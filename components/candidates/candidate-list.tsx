@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { CANDIDATES_SHOWN, useCandidates } from '@/components/hooks/use-candidates';
 import { EmptyState } from '@/components/ui/empty-state';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';

@@ -1,12 +1,12 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { removeObservation, useCandidate } from '@/components/hooks/use-candidates';
 import { Button } from '@/components/ui/button';
 import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';

@@ -1,4 +1,3 @@
-import Link from 'next/link';
 import { OverlaidPosteriorsChart } from '@/components/charts/overlaid-posteriors-chart';
 import { rateAxisMax } from '@/components/charts/rate-curve';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
@@ -6,6 +5,7 @@ import { countOf } from '@/components/runs/level-table';
 import { savedAnswer } from '@/components/runs/limit-answer';
 import { reachTo } from '@/components/runs/posterior-data';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
+import { Link } from '@/components/ui/link';
 import { Plate, StatementNumber } from '@/components/ui/plate';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain } from '@/lib/quantities/display';
 import type { CoolingRelationView } from '@/lib/schemas/cooling';

@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { useExercises } from '@/components/hooks/use-exercises';
 import { EmptyState } from '@/components/ui/empty-state';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';

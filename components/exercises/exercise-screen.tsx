@@ -1,6 +1,5 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { ChangedMeanwhile } from '@/components/hooks/change';
@@ -12,6 +11,7 @@ import {
 } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
 import { ChangedNotice } from '@/components/ui/form/changed-notice';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';

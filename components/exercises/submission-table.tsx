@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { Button } from '@/components/ui/button';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { ExerciseDetail, ParticipantView, SubmissionView } from '@/lib/schemas/exercises';

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { type HelpGroup, helpGroups, helpWordNames, helpWords } from '@/lib/help';
 import { typesetParagraph } from '@/lib/help/typeset';
@@ -27,7 +27,7 @@ export function HelpContents() {
                   key={word}
                   className="grid gap-x-4 border-rule border-b py-1.5 sm:grid-cols-[13rem_1fr]"
                 >
-                  <Link href={`/help/${word}`} prefetch={false} className="py-1 font-semibold">
+                  <Link href={`/help/${word}`} className="py-1 font-semibold">
                     {helpWords[word].title}
                   </Link>
                   <span className="py-1 text-ink2 text-note">

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { Conditions } from '@/components/ui/plate';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { type HelpWord, helpDrawing, helpGroups, helpWordNames, helpWords } from '@/lib/help';
@@ -63,7 +63,6 @@ export function HelpEntryPage({ word }: { word: HelpWord }) {
                 <li key={other}>
                   <Link
                     href={`/help/${other}`}
-                    prefetch={false}
                     className="inline-block py-1"
                     aria-current={other === word ? 'page' : undefined}
                   >

@@ -1,6 +1,6 @@
-import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { Mark, Wordmark } from '@/components/ui/brand';
+import { Link } from '@/components/ui/link';
 import { Ruler } from '@/components/ui/log-ticks';
 import { SkipLink } from '@/components/ui/skip-link';
 

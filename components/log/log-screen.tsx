@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { apiPath, withQuery } from '@/components/hooks/api-path';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SelectField } from '@/components/ui/select-field';

@@ -1,6 +1,6 @@
 'use client';
 
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { useMoment } from '@/components/ui/time-zone';
 import type { AuditEntryView } from '@/lib/schemas/audit';

@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { seriesColour } from '@/components/charts/series';
 import { useMapStore } from '@/components/hooks/use-maps';
+import { Link } from '@/components/ui/link';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';

@@ -1,4 +1,4 @@
-import Link from 'next/link';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import type { FirstStep } from '@/lib/schemas/first-steps';

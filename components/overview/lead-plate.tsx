@@ -1,9 +1,9 @@
-import Link from 'next/link';
 import { HistoryStaircase } from '@/components/charts/history-staircase';
 import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Icon } from '@/components/ui/icon';
+import { Link } from '@/components/ui/link';
 import { Conditions, Plate, StatementNumber } from '@/components/ui/plate';
 import { useMoment } from '@/components/ui/time-zone';
 import {

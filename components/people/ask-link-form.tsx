@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { askLink } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
 import type { LinkPurpose } from '@/lib/schemas/account-access';

@@ -1,12 +1,12 @@
 'use client';
 
-import Link from 'next/link';
 import { usePathname } from 'next/navigation';
 import { Suspense } from 'react';
 import { useJobs } from '@/components/hooks/use-jobs';
 import { endSession } from '@/components/hooks/use-sign-in';
 import type { BeginAction } from '@/components/search/entries';
 import { FindButton } from '@/components/search/find-button';
+import { Link } from '@/components/ui/link';
 import { Menu, MenuAction, MenuChoice, MenuLink, MenuNote, MenuRule } from '@/components/ui/menu';
 import { NavLink } from '@/components/ui/nav-link';
 import type { Theme } from '@/components/ui/theme';

@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { signUp, startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
 import { TextField } from '@/components/ui/text-field';

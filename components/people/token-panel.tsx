@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { revokeToken, useTokens } from '@/components/hooks/use-people';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';

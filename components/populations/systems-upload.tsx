@@ -1,6 +1,5 @@
 'use client';
 
-import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
@@ -10,6 +9,7 @@ import { type FileKind, tableContainers } from '@/components/surveys/file-kinds'
 import { FileNeeds } from '@/components/surveys/file-needs';
 import type { IncomingEntry } from '@/components/surveys/incoming-entry';
 import { FileDrop } from '@/components/ui/file-drop';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextField } from '@/components/ui/text-field';

@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { ChangedMeanwhile } from '@/components/hooks/change';
 import { sharePopulation } from '@/components/hooks/use-populations';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';

@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { sendBundle, useImports } from '@/components/hooks/use-releases';
 import { FileDrop } from '@/components/ui/file-drop';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';

@@ -1,6 +1,6 @@
-import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { formatDay } from '@/components/runs/time-words';
+import { Link } from '@/components/ui/link';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { ReleasePage } from '@/lib/schemas/release-page';
 import { shortDigest } from './release-words';

@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { askStudy } from '@/components/hooks/use-studies';
 import { questionAddress } from '@/components/studies/kind-words';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAction } from '@/components/ui/text-action';
 import type { RunView } from '@/lib/schemas/runs';

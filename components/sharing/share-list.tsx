@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { acceptShare, refuseShare } from '@/components/hooks/use-sharing';
 import { ReasonDialog } from '@/components/stars/reason-dialog';
 import { Button } from '@/components/ui/button';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAction } from '@/components/ui/text-action';

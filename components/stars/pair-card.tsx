@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { seriesColour } from '@/components/charts/series';
 import type { Verdict } from '@/components/hooks/use-stars';
 import { Button } from '@/components/ui/button';
+import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import { TextAction } from '@/components/ui/text-action';
 import { useDay } from '@/components/ui/time-zone';

@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { seriesColour } from '@/components/charts/series';
 import { splitStar } from '@/components/hooks/use-stars';
+import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';

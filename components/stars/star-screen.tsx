@@ -1,6 +1,5 @@
 'use client';
 
-import Link from 'next/link';
 import { useMemo } from 'react';
 import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
 import { ContrastChart } from '@/components/charts/contrast-chart';
@@ -8,6 +7,7 @@ import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { RampKey } from '@/components/charts/ramp-key';
 import { decidePair, useStar } from '@/components/hooks/use-stars';
 import { useMap } from '@/components/hooks/use-surveys';
+import { Link } from '@/components/ui/link';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';

@@ -1,7 +1,7 @@
-import Link from 'next/link';
 import { seriesColour } from '@/components/charts/series';
 import type { DataColumn, Facet } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
+import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import type { AgeValue, DistanceValue, StarView } from '@/lib/schemas/stars';
 import { probabilityColumn } from './probability-column';

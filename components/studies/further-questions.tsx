@@ -1,10 +1,10 @@
 'use client';
 
-import Link from 'next/link';
 import { memo } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useRunStudies } from '@/components/hooks/use-studies';
 import { FoldSection } from '@/components/ui/fold-section';
+import { Link } from '@/components/ui/link';
 import type { StudySummary } from '@/lib/schemas/studies';
 import { AnswerState } from './earlier-answers';
 import { kindOrder, kindWords, questionAddress } from './kind-words';

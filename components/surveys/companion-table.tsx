@@ -1,5 +1,5 @@
-import Link from 'next/link';
 import { statusMarks, statusWords } from '@/components/candidates/status-words';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { CompanionView } from '@/lib/schemas/surveys';

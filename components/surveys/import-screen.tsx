@@ -1,7 +1,6 @@
 'use client';
 
 import dynamic from 'next/dynamic';
-import Link from 'next/link';
 import { useState } from 'react';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { useCoolingTables, useSurvey } from '@/components/hooks/use-surveys';
@@ -14,6 +13,7 @@ import {
 import { Button } from '@/components/ui/button';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { FileDrop } from '@/components/ui/file-drop';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';

@@ -1,12 +1,12 @@
 'use client';
 
-import Link from 'next/link';
 import { useMemo } from 'react';
 import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { seriesColour } from '@/components/charts/series';
 import { Sparkline } from '@/components/charts/sparkline';
 import type { DataColumn } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
 import { observedYears } from './observed-years';

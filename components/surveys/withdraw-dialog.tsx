@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useEffect, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { readDependents, withdrawUpload } from '@/components/hooks/use-uploads';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
+import { Link } from '@/components/ui/link';
 import { Notice } from '@/components/ui/notice';
 import type { UploadDependents, UploadView } from '@/lib/schemas/uploads';
 

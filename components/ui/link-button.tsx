@@ -1,7 +1,7 @@
-import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { type ButtonSize, type ButtonVariant, buttonLook } from './button-look';
 import { Icon, type IconName } from './icon';
+import { Link } from './link';
 
 interface LinkButtonProps {
   href: string;

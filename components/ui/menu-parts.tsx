@@ -1,9 +1,9 @@
 'use client';
 
 import * as Primitive from '@radix-ui/react-dropdown-menu';
-import Link from 'next/link';
 import { type ReactNode, Suspense } from 'react';
 import { Icon, type IconName } from './icon';
+import { Link } from './link';
 import { floatingLook, type MenuProps } from './menu-look';
 
 /** The menu as the library makes it, open from the start: the light one before it was pressed. */

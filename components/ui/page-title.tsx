@@ -1,6 +1,6 @@
-import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { Icon } from './icon';
+import { Link } from './link';
 
 interface PageTitleProps {
   title: ReactNode;

@@ -1,9 +1,9 @@
 'use client';
 
 import * as Primitive from '@radix-ui/react-toast';
-import Link from 'next/link';
 import { useSyncExternalStore } from 'react';
 import { Icon, type IconName } from './icon';
+import { Link } from './link';
 import type { Tone } from './notice';
 import { dismissToast, toastStore } from './toast-store';
 

@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { type ReactNode, useId, useState } from 'react';
 import { Mark, Wordmark } from './brand';
 import { Icon } from './icon';
+import { Link } from './link';
 import { Ruler } from './log-ticks';
 
 interface TopBarProps {

@@ -1,11 +1,11 @@
 'use client';
 
-import Link from 'next/link';
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { cancelJob, retryJob } from '@/components/hooks/use-runs';
 import { formatDuration } from '@/components/runs/time-words';
 import { Icon } from '@/components/ui/icon';
+import { Link } from '@/components/ui/link';
 import { PopoverClose } from '@/components/ui/popover-parts';
 import { TextAction } from '@/components/ui/text-action';
 import type { JobView } from '@/lib/schemas/jobs';

@@ -1,11 +1,11 @@
 import type { Metadata } from 'next';
-import Link from 'next/link';
 import {
   GuideContents,
   GuideRefusals,
   GuideRules,
   GuideSearch,
 } from '@/components/api/guide-contents';
+import { Link } from '@/components/ui/link';
 import { PageTitle } from '@/components/ui/page-title';
 import { searchGuide } from '@/lib/schemas/api-guide';
 import { apiGuide } from './guide';

@@ -1,5 +1,5 @@
-import Link from 'next/link';
 import { formatDuration } from '@/components/runs/time-words';
+import { Link } from '@/components/ui/link';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { useMoment } from '@/components/ui/time-zone';
 import { jobHref, jobTitle } from '@/components/work/job-words';

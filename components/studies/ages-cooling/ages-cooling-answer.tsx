@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { AgeShiftChart } from '@/components/charts/age-shift-chart';
 import { modelLabel } from '@/components/runs/input-choices';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { describeLevel } from '@/lib/inference';
 import { AnswerNotes } from '../answer-notes';

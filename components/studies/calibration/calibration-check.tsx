@@ -1,7 +1,7 @@
 'use client';
 
-import Link from 'next/link';
 import { useRunStudies, useStudy } from '@/components/hooks/use-studies';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import type { StudySummary } from '@/lib/schemas/studies';
 import { questionAddress } from '../kind-words';

@@ -1,9 +1,9 @@
 'use client';
 
-import Link from 'next/link';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudiesOfKind } from '@/components/hooks/use-studies';
 import { EmptyState } from '@/components/ui/empty-state';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';

@@ -16,10 +16,11 @@ import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { ListedPopulation } from '@/lib/schemas/populations';
+import type { RunView } from '@/lib/schemas/runs';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
 import { askedRun } from '../answered-run';
 
-/** Drawn once the run is here, and loaded while it comes. */
 const ForecastForm = dynamic(async () => (await import('./forecast-form')).ForecastForm, {
   loading: () => (
     <p className="rounded-plate bg-well px-5 py-6 text-ink3 text-note" role="status">
@@ -30,9 +31,10 @@ const ForecastForm = dynamic(async () => (await import('./forecast-form')).Forec
 
 interface NewForecastProps {
   collaboration: string;
-  analyses: AnalysisView[];
-  /** Key of the analysis to start from. */
-  wanted?: string;
+  /** Analyses with a finished run. */
+  bases: AnalysisView[];
+  /** The one to start from, with its run; null without bases. */
+  first: { key: string; run: RunView; population: ListedPopulation | null } | null;
   /** An earlier forecast whose settings are taken over. */
   start?: SettingsOf<'forecast'>;
   /** Why this person cannot ask. */
@@ -41,17 +43,21 @@ interface NewForecastProps {
 
 /** From which run, and what is planned; the answer has a page of its own. */
 export function NewForecast(props: NewForecastProps) {
-  const { collaboration, start, disabledReason } = props;
+  const { collaboration, bases, first, start, disabledReason } = props;
   const router = useRouter();
-  const bases = props.analyses.filter(({ runs }) => runs.some(isFinished));
-  const [key, setKey] = useState(
-    bases.find((one) => one.key === props.wanted)?.key ?? bases[0]?.key ?? '',
-  );
+  const [key, setKey] = useState(first?.key ?? '');
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
   const analysis = bases.find((one) => one.key === key);
-  const { data: run, error } = useRun(collaboration, analysis?.runs.find(isFinished)?.id);
-  const { data: populations } = usePopulations(collaboration);
+  const { data: run, error } = useRun(
+    collaboration,
+    analysis?.runs.find(isFinished)?.id,
+    first?.run,
+  );
+  const { data: populations } = usePopulations(
+    collaboration,
+    first?.population ? [first.population] : undefined,
+  );
   const definition = populations?.find(({ id }) => id === run?.inputs?.population.id) ?? null;
   const asked = analysis && run && askedRun({ collaboration, analysis, run, definition });
 

@@ -1,8 +1,8 @@
 'use client';
 
-import Link from 'next/link';
 import { EvidenceChart, formatLogB } from '@/components/charts/evidence-chart';
 import { FormulaWords } from '@/components/ui/formula-words';
+import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';

@@ -1,4 +1,5 @@
 import type { Metadata } from 'next';
+import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewForecast } from '@/components/studies/forecast/new-forecast';
 import type { Actor } from '@/lib/access/actor';
@@ -6,6 +7,7 @@ import { may } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { listAnalyses } from '@/lib/services/analyses';
 import { getStudy } from '@/lib/services/studies';
+import { studyInputs } from '../../analyses/[analysis]/studies/study-inputs';
 
 export const metadata: Metadata = { title: 'New forecast' };
 
@@ -23,11 +25,17 @@ export default async function NewForecastPage({
     from === undefined ? null : findForecast(actor, from),
   ]);
   const canAsk = may(actor, 'run-analysis', { isOwn: true });
+  const bases = analyses.filter(({ runs }) => runs.some(isFinished));
+  const wanted = earlier?.run.analysisKey ?? analysis;
+  const base = bases.find(({ key }) => key === wanted) ?? bases[0];
+  const { run = null, runPopulation = null } = base
+    ? await studyInputs(actor.collaboration, base.key)
+    : {};
   return (
     <NewForecast
       collaboration={actor.collaboration}
-      analyses={analyses}
-      wanted={earlier?.run.analysisKey ?? analysis}
+      bases={bases}
+      first={base && run ? { key: base.key, run, population: runPopulation } : null}
       start={earlier?.settings.kind === 'forecast' ? earlier.settings : undefined}
       disabledReason={canAsk ? undefined : 'Only members of this collaboration can ask for one.'}
     />

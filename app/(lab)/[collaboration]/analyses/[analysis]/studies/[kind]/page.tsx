@@ -5,6 +5,7 @@ import { KnownAnswers } from '@/components/hooks/known-answers';
 import { isStudyKind, kindWords, questionAddress } from '@/components/studies/kind-words';
 import { StudyPage } from '@/components/studies/study-page';
 import type { StudyKind } from '@/lib/schemas/study-settings';
+import { listCoolingTables } from '@/lib/services/cooling-tables';
 import { listPopulations } from '@/lib/services/populations';
 import { answeredInputs } from '../study-inputs';
 
@@ -38,7 +39,14 @@ export default async function FurtherQuestionPage({ params, searchParams }: Page
 
 /** What the settings of a kind offer a choice of. */
 async function offered(collaboration: string, kind: StudyKind) {
-  if (kind !== 'population-comparison') return {};
-  const { populations } = await listPopulations(await currentActor(collaboration));
-  return { populations };
+  const actor = await currentActor(collaboration);
+  switch (kind) {
+    case 'population-comparison':
+      return { populations: (await listPopulations(actor)).populations };
+    case 'systematics':
+    case 'ages-cooling':
+      return { 'cooling-tables': await listCoolingTables(actor) };
+    default:
+      return {};
+  }
 }
