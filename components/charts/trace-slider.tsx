@@ -4,10 +4,8 @@ import { type KeyboardEvent, type ReactNode, useId, useRef, useState } from 'rea
 import { HelpMark } from '@/components/help/help-mark';
 import type { HelpWord } from '@/lib/help';
 import { formatPlain } from '@/lib/quantities/display';
-import { BottomAxis } from './axes';
-import { areaPath, linePath, valueAt } from './paths';
-import { scaleLinear } from './scales';
-import { evenTicks } from './ticks';
+import { valueAt } from './paths';
+import { type LimitTrace, TRACK, TraceTrack, traceScales } from './trace-track';
 import { useWidth } from './use-width';
 
 export interface TraceSliderProps {
@@ -17,8 +15,8 @@ export interface TraceSliderProps {
   label?: ReactNode;
   /** Short form in the spoken value: "β". */
   symbol?: string;
-  /** The limit as a function of the parameter: the track. Undefined while it is being computed. */
-  trace?: { parameter: Float64Array; limit: Float64Array };
+  /** The limit as a function of the parameter: the TRACK. Undefined while it is being computed. */
+  trace?: LimitTrace;
   value: number;
   /** Place of the stored state, shown as a hollow dot while the value differs from it. */
   savedValue?: number;
@@ -40,7 +38,6 @@ export interface TraceSliderProps {
 }
 
 const height = 112;
-const track = { top: 18, bottom: 86, inset: 10 };
 
 /** What a screen reader says: "β 0.4, limit below 6.6 per cent at 95 per cent". */
 export function traceValueText(
@@ -73,16 +70,10 @@ export function TraceSlider(props: TraceSliderProps) {
   const [isDragging, setDragging] = useState(false);
   const before = useRef(value);
   const inputId = useId();
-  const x = scaleLinear([min, max], [track.inset, width - track.inset]);
-  const limits = trace ? Array.from(trace.limit).filter(Number.isFinite) : [];
-  const [low, high] = [Math.min(...limits), Math.max(...limits)];
-  const y = scaleLinear([0.45 * low, Math.max(high, low * 1.02)], [track.bottom, track.top]);
+  const { x, y } = traceScales({ trace, width, min, max });
   const at = (parameter: number) =>
-    trace ? y(valueAt(trace.parameter, trace.limit, parameter)) : (track.top + track.bottom) / 2;
+    trace ? y(valueAt(trace.parameter, trace.limit, parameter)) : (TRACK.top + TRACK.bottom) / 2;
   const isMoved = savedValue !== undefined && Math.abs(savedValue - value) > step / 2;
-  const ticks =
-    props.ticks?.map((tick) => ({ value: tick, isMajor: true, label: formatPlain(tick) })) ??
-    evenTicks(min, max);
 
   const press = (event: KeyboardEvent<HTMLInputElement>) => {
     if (event.key === 'Escape') {
@@ -111,8 +102,8 @@ export function TraceSlider(props: TraceSliderProps) {
           id={inputId}
           className="range-native"
           style={{
-            left: track.inset - 12,
-            width: width - 2 * track.inset + 24,
+            left: TRACK.inset - 12,
+            width: width - 2 * TRACK.inset + 24,
             top: 4,
             height: 90,
           }}
@@ -144,30 +135,13 @@ export function TraceSlider(props: TraceSliderProps) {
           viewBox={`0 0 ${width} ${height}`}
           aria-hidden="true"
         >
-          {trace ? (
-            <>
-              <path
-                className="track"
-                d={areaPath(trace.parameter, trace.limit, x, y, track.bottom)}
-              />
-              <path className="trace-line" d={linePath(trace.parameter, trace.limit, x, y)} />
-              <EndValues trace={trace} width={width} y={y} formatLimit={formatLimit} />
-            </>
-          ) : (
-            <rect
-              className="track"
-              x={track.inset}
-              y={track.top}
-              width={Math.max(0, width - 2 * track.inset)}
-              height={track.bottom - track.top}
-            />
-          )}
-          <BottomAxis
-            ticks={ticks}
-            scale={x}
-            y={track.bottom}
-            x0={track.inset}
-            x1={width - track.inset}
+          <TraceTrack
+            trace={trace}
+            width={width}
+            min={min}
+            max={max}
+            ticks={props.ticks}
+            formatLimit={formatLimit}
           />
           {isMoved && (
             <>
@@ -176,12 +150,12 @@ export function TraceSlider(props: TraceSliderProps) {
                 x1={x(savedValue)}
                 x2={x(savedValue)}
                 y1={at(savedValue)}
-                y2={track.bottom}
+                y2={TRACK.bottom}
               />
               <circle className="saved-dot" cx={x(savedValue)} cy={at(savedValue)} r="4" />
             </>
           )}
-          <line className="stem" x1={x(value)} x2={x(value)} y1={at(value)} y2={track.bottom} />
+          <line className="stem" x1={x(value)} x2={x(value)} y1={at(value)} y2={TRACK.bottom} />
           <circle
             className={isDragging ? 'knob knob-drag' : 'knob'}
             cx={x(value)}
@@ -191,35 +165,6 @@ export function TraceSlider(props: TraceSliderProps) {
         </svg>
       </div>
     </div>
-  );
-}
-
-function EndValues({
-  trace,
-  width,
-  y,
-  formatLimit,
-}: {
-  trace: NonNullable<TraceSliderProps['trace']>;
-  width: number;
-  y(limit: number): number;
-  formatLimit(limit: number): string;
-}) {
-  const last = trace.limit.length - 1;
-  return (
-    <>
-      <text className="quiet" x={track.inset} y={Math.max(11, y(trace.limit[0]) - 7)}>
-        {formatLimit(trace.limit[0])}
-      </text>
-      <text
-        className="quiet"
-        x={width - track.inset}
-        y={Math.max(11, y(trace.limit[last]) - 7)}
-        textAnchor="end"
-      >
-        {formatLimit(trace.limit[last])}
-      </text>
-    </>
   );
 }
 

@@ -28,6 +28,10 @@ export interface AgesCooling {
   error: unknown;
   /** Something that was asked for is still on its way. */
   isFetching: boolean;
+  /** Whether all stacks were asked for; once they are there they stay. */
+  wantsAll: boolean;
+  /** Asks for all: a control has left the run's ages or cooling model. */
+  wantAll(): void;
   /** Looks for a question that was asked just now. */
   refresh(): void;
 }
@@ -40,13 +44,12 @@ const once = { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnR
  *
  * @param known the answer that the page brings along
  * @param isReady whether the run's own maps are there, which come first
- * @param wantsAll whether a control has left the run's ages or cooling model
  */
 export function useAgesCooling(
   collaboration: string,
   run: RunView,
   known: AgesCoolingAnswer | null,
-  { isReady, wantsAll }: { isReady: boolean; wantsAll: boolean },
+  isReady: boolean,
 ): AgesCooling {
   const { data: studies, mutate } = useRunStudies(collaboration, run.id);
   const asked = studies?.filter(({ settings }) => settings.kind === 'ages-cooling');
@@ -59,9 +62,7 @@ export function useAgesCooling(
     return study?.result?.kind === 'ages-cooling' ? { id: study.id, result: study.result } : null;
   }, [isKnown, known, study]);
 
-  // Once they are there they stay: a control may leave again.
-  const [keepsAll, setKeepsAll] = useState(wantsAll);
-  if (wantsAll && !keepsAll) setKeepsAll(true);
+  const [wantsAll, setWantsAll] = useState(false);
   const isFirst = ({ cooling, age }: Wanted) => cooling === COOLING_AS_RUN || age === 0;
   const wanted = answer && isReady ? wantedOf(answer) : [];
   const first = useStacks(collaboration, run, answer?.id, wanted.filter(isFirst));
@@ -69,22 +70,25 @@ export function useAgesCooling(
     collaboration,
     run,
     answer?.id,
-    keepsAll && first.data ? wanted.filter((one) => !isFirst(one)) : [],
+    wantsAll && first.data ? wanted.filter((one) => !isFirst(one)) : [],
   );
   const stacks = useMemo(
     () => [...(first.data ?? []), ...(rest.data ?? [])],
     [first.data, rest.data],
   );
-  return {
-    answer,
-    open: newest && newest.job.status !== 'done' ? newest : undefined,
-    stacks,
-    error: first.error ?? rest.error,
-    isFetching: !isReady || first.isLoading || rest.isLoading,
-    refresh: () => {
-      void mutate();
-    },
-  };
+  const open = newest && newest.job.status !== 'done' ? newest : undefined;
+  const error = first.error ?? rest.error;
+  const isFetching = !isReady || first.isLoading || rest.isLoading;
+  return useMemo(
+    () => ({
+      ...{ answer, open, stacks, error, isFetching, wantsAll },
+      wantAll: () => setWantsAll(true),
+      refresh: () => {
+        void mutate();
+      },
+    }),
+    [answer, open, stacks, error, isFetching, wantsAll, mutate],
+  );
 }
 
 type Wanted = Omit<FetchedStack, 'maps'>;

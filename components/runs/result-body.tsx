@@ -6,6 +6,7 @@ import {
   memo,
   type ReactNode,
   useCallback,
+  useEffect,
   useMemo,
   useRef,
   useState,
@@ -13,9 +14,7 @@ import {
 import type { PosteriorView } from '@/components/charts/posterior-chart';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
-import { useAgesCooling } from '@/components/hooks/use-ages-cooling';
 import { useCalm } from '@/components/hooks/use-calm';
-import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { FootBar } from '@/components/ui/foot-bar';
@@ -26,9 +25,8 @@ import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
-import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { ChecksStrip } from './checks-strip';
-import { furtherOf, type LiveSample, sampleOf } from './live-sample';
+import type { LiveSample } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
 import { ProvenanceSection } from './provenance';
@@ -40,6 +38,7 @@ import { useAnnounced } from './use-announced';
 import { useLiveResult } from './use-live-result';
 import { useLiveTask } from './use-live-task';
 import { useMapFigures } from './use-map-figures';
+import type { RunSource } from './use-run-source';
 
 /** Drawn by the server with the number that they belong to, and made live after it. */
 const PosteriorChart = dynamic(
@@ -66,8 +65,8 @@ interface ResultBodyProps {
   inRun: LiveSetting;
   setting: LiveSetting;
   isUnsaved: boolean;
-  /** The run's answer about ages and cooling, as the page brought it along. */
-  agesCooling: AgesCoolingAnswer | null;
+  /** The same object while a hand moves a control. */
+  source: RunSource;
   /** Whether this person may ask the run further questions. */
   canAsk: boolean;
   /** Repeated at the foot of a narrow screen. */
@@ -75,19 +74,19 @@ interface ResultBodyProps {
   onSetting(setting: LiveSetting): void;
 }
 
+/** How often the tracks of the other controls, and the words of the figures' files, follow a hand. */
+const PACE = { paceMs: 400 };
+
 /** A finished run under its controls: what is shown follows the setting, or says that it does not. */
 export function ResultBody(props: ResultBodyProps) {
   const { collaboration, run, inputs, result, inRun, setting, isUnsaved, onSetting } = props;
-  const { data: maps, error, mutate } = useRunMaps(collaboration, run);
-  const others = useAgesCooling(collaboration, run, props.agesCooling, {
-    isReady: maps !== undefined,
-    wantsAll: !isAsRun(setting),
-  });
-  const sample = useMemo(() => {
-    const further = maps && others.answer && furtherOf(others.answer, maps, others.stacks);
-    return maps && sampleOf(inputs, maps, further ?? undefined);
-  }, [inputs, maps, others.answer, others.stacks]);
-  const isWaiting = !isAsRun(setting) && others.isFetching;
+  const { sample, error, agesCooling: others } = props.source;
+  const isLeft = !isAsRun(setting);
+  const { wantsAll, wantAll } = others;
+  useEffect(() => {
+    if (isLeft && !wantsAll) wantAll();
+  }, [isLeft, wantsAll, wantAll]);
+  const isWaiting = isLeft && (others.isFetching || !wantsAll);
   const outcome = useLiveResult(isWaiting ? undefined : sample, setting);
   const models = others.answer?.result.models;
   const shown = useMemo(
@@ -111,10 +110,15 @@ export function ResultBody(props: ResultBodyProps) {
     ),
     [collaboration, run, shown.isLive],
   );
+  const settled = useCalm(shown, PACE);
+  const figures = useMemo(
+    () => runFigures(run, inputs, result, settled),
+    [run, inputs, result, settled],
+  );
   const insideCount = inputs.companions.length - shown.outside.length;
 
   return (
-    <FigureFrame collaboration={collaboration} {...runFigures(run, inputs, result, shown)}>
+    <FigureFrame collaboration={collaboration} {...figures}>
       <ResultPlate {...{ run, inputs, result, shown, onDefinition }} grid={map} />
       {outcome?.fault !== undefined && (
         <div className="mt-3">
@@ -129,7 +133,7 @@ export function ResultBody(props: ResultBodyProps) {
             tone="bad"
             title="The controls have no maps to follow."
             actions={
-              <TextAction icon="undo" onClick={() => mutate()}>
+              <TextAction icon="undo" onClick={props.source.fetchAgain}>
                 Fetch again
               </TextAction>
             }
@@ -167,13 +171,13 @@ export function ResultBody(props: ResultBodyProps) {
             Maps for other ages and cooling models could not be fetched: {sentenceOf(others.error)}
           </p>
         )}
-        {maps && isWaiting && others.error === undefined && (
+        {sample && isWaiting && others.error === undefined && (
           <p className="mt-2 text-ink3 text-note" role="status">
             Fetching the maps for these ages and this cooling model; until then the numbers are
             those of run {run.number}.
           </p>
         )}
-        {!maps && error === undefined && (
+        {!sample && error === undefined && (
           <p className="mt-2 text-ink3 text-note" role="status">
             Fetching the maps of {result.stars} stars; until then the numbers are those of run{' '}
             {run.number}.
@@ -226,9 +230,6 @@ export function ResultBody(props: ResultBodyProps) {
     </FigureFrame>
   );
 }
-
-/** How often the tracks of the other controls follow a hand. */
-const PACE = { paceMs: 400 };
 
 /** The controls with the limits along their tracks, which a thread beside the page computes. */
 function LiveConsole({

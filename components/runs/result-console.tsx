@@ -1,17 +1,18 @@
 'use client';
 
-import { type ReactNode, useState } from 'react';
+import { type ReactNode, useMemo, useState } from 'react';
 import { RangeControl } from '@/components/charts/range-control';
 import { TraceSlider } from '@/components/charts/trace-slider';
 import { AxisRange, formatIndex, MassRange } from '@/components/populations/law-notation';
 import { Console } from '@/components/ui/console';
 import { TextAction } from '@/components/ui/text-action';
-import { describeLevel } from '@/lib/inference';
+import { describeLevel, type RateQuantity } from '@/lib/inference';
 import { fromLogIndex, toLogIndex } from '@/lib/population';
 import { formatPercent, formatSignificant } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
+import type { Consequences } from './consequences';
 import { formatShift, shiftsOf } from './input-choices';
 import { type LiveSetting, tidy, withInputs } from './live-setting';
 import { ResultSwitches, type ResultSwitchesProps } from './result-switches';
@@ -24,6 +25,17 @@ interface ResultConsoleProps extends Omit<ResultSwitchesProps, 'further'> {
   offer?: ReactNode;
 }
 
+const LEVEL_TICKS = [50, 68, 80, 95];
+
+const orNoLimit = (words: (limit: number) => string) => (limit: number) =>
+  Number.isFinite(limit) ? words(limit) : 'no limit';
+
+/** One function a quantity, so that a track is not drawn anew for it. */
+const limitWords: Record<RateQuantity, (limit: number) => string> = {
+  host_fraction: orNoLimit((limit) => formatPercent(limit)),
+  companions_per_star: orNoLimit((limit) => formatSignificant(100 * limit, 2)),
+};
+
 /** Ranges, indices and level over their consequences, then the switches that carry theirs. */
 export function ResultConsole(props: ResultConsoleProps) {
   const { setting, saved, quantity, grid, consequences, profiles, onSetting } = props;
@@ -32,12 +44,8 @@ export function ResultConsole(props: ResultConsoleProps) {
   const further = isFull ? '' : 'max-md:hidden';
   const redefine = (changes: Partial<PowerLawDefinition>) =>
     onSetting({ ...setting, definition: { ...definition, ...changes } });
-  const limit = (value: number) =>
-    Number.isFinite(value)
-      ? quantity === 'host_fraction'
-        ? formatPercent(value)
-        : formatSignificant(100 * value, 2)
-      : 'no limit';
+  const limit = limitWords[quantity];
+  const tracks = useMemo(() => consequences && tracksOf(consequences), [consequences]);
   const levelWords = `at ${describeLevel(setting.credibleLevel).replace('\u2009%', ' per cent')}`;
 
   const index = (
@@ -47,12 +55,11 @@ export function ResultConsole(props: ResultConsoleProps) {
     const value = tidy(fromLogIndex(definition[field], 'linear'));
     const savedValue = tidy(fromLogIndex(saved.definition[field], 'linear'));
     const [min, max] = trackOf(TRACK[field], value, savedValue);
-    const trace = consequences?.[field];
     return (
       <TraceSlider
         {...names}
         help="index-convention"
-        trace={trace && asTrace(trace)}
+        trace={tracks?.[field]}
         value={value}
         savedValue={savedValue}
         min={min}
@@ -147,7 +154,7 @@ export function ResultConsole(props: ResultConsoleProps) {
             name="Age shift"
             label="Age shift, all stars"
             help="age-shift"
-            trace={consequences?.age ? asTrace(withoutGaps(consequences.age)) : undefined}
+            trace={tracks?.age}
             value={setting.ageShift ?? 0}
             savedValue={saved.ageShift ?? 0}
             {...shiftEnds(props.inputs, setting)}
@@ -164,13 +171,13 @@ export function ResultConsole(props: ResultConsoleProps) {
         <TraceSlider
           name="Credible level"
           help="credible-level"
-          trace={consequences ? asTrace(percent(consequences.level)) : undefined}
+          trace={tracks?.level}
           value={tidy(100 * setting.credibleLevel)}
           savedValue={tidy(100 * saved.credibleLevel)}
           min={100 * levelMin}
           max={100 * levelMax}
           step={0.5}
-          ticks={[50, 68, 80, 95]}
+          ticks={LEVEL_TICKS}
           onChange={(next) => onSetting({ ...setting, credibleLevel: tidy(next / 100) })}
           formatLimit={limit}
           formatValue={(value) => describeLevel(value / 100)}
@@ -194,6 +201,16 @@ function ControlCell({ className = '', children }: { className?: string; childre
 /** The axis of a control is the map's own, unless the range reaches past it. */
 function boundsOf(nodes: Float64Array, min: number, max: number): [number, number] {
   return [Math.min(nodes[0], min), Math.max(nodes[nodes.length - 1], max)];
+}
+
+/** The same objects as long as the consequences are the same. */
+function tracksOf({ massIndex, semiMajorAxisIndex, level, age }: Consequences) {
+  return {
+    massIndex: asTrace(massIndex),
+    semiMajorAxisIndex: asTrace(semiMajorAxisIndex),
+    level: asTrace(percent(level)),
+    age: age === null ? undefined : asTrace(withoutGaps(age)),
+  };
 }
 
 function asTrace({ values, limits }: { values: number[]; limits: number[] }) {

@@ -10,7 +10,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
@@ -20,6 +20,7 @@ import { RunNotices } from './run-notices';
 import { recipeOfRun } from './run-recipe';
 import { isFinished, isOnItsWay } from './run-standing';
 import { isAsRun } from './under';
+import { type RunSource, useRunSource } from './use-run-source';
 
 /** Each analysis shows one of these, and a run on its way only some. */
 const NoRunPlate = dynamic(async () => (await import('./no-run-plate')).NoRunPlate);
@@ -48,37 +49,67 @@ export function ResultScreen(props: ResultScreenProps) {
   );
   const finished = analysis.runs.find(isFinished);
   const { data: run = props.run } = useRun(collaboration, finished?.id, props.run ?? undefined);
-  const { definition } = analysis.population;
-  const isLive =
-    isPlainPowerLaw(definition) &&
-    (runPopulation === null || isPlainPowerLaw(runPopulation.definition));
-  if (isLive) return <LiveResult {...props} planned={definition} />;
-  const onChanged = () => {
+  const inRun = useRunDefinition(collaboration, analysis, run, runPopulation);
+  const onChanged = useCallback(() => {
     void mutate();
-  };
-  return (
-    <StoredResult
-      collaboration={collaboration}
-      analysis={analysis}
-      run={run}
-      definition={runPopulation?.definition ?? definition}
-      onChanged={onChanged}
-    />
-  );
+  }, [mutate]);
+  const { definition: planned } = analysis.population;
+  const isLive =
+    isPlainPowerLaw(planned) &&
+    (runPopulation === null || isPlainPowerLaw(runPopulation.definition));
+  if (!isLive) {
+    return (
+      <StoredResult
+        collaboration={collaboration}
+        analysis={analysis}
+        run={run}
+        definition={runPopulation?.definition ?? planned}
+        onChanged={onChanged}
+      />
+    );
+  }
+  const live = { collaboration, analysis, planned, asked: props.asked, onChanged };
+  if (!run?.result || !run.inputs || !inRun) return <LiveResult {...live} />;
+  const shown = { run, inputs: run.inputs, result: run.result, definition: inRun };
+  const known = run.id === props.run?.id ? props.agesCooling : null;
+  return <SourcedResult {...live} shown={shown} known={known} />;
+}
+
+interface LiveResultProps {
+  collaboration: string;
+  analysis: AnalysisView;
+  /** Of the recipe. */
+  planned: PowerLawDefinition;
+  asked: LiveSetting | undefined;
+  onChanged(): void;
+  /** A finished run, with the maps that its controls follow. */
+  shown?: ShownRun & { source: RunSource };
+}
+
+interface ShownRun {
+  run: RunView;
+  inputs: RunInputs;
+  result: RunResult;
+  definition: PowerLawDefinition;
+}
+
+type SourcedResultProps = Omit<LiveResultProps, 'shown'> & {
+  shown: ShownRun;
+  known: AgesCoolingAnswer | null;
+};
+
+function SourcedResult({ shown, known, ...live }: SourcedResultProps) {
+  const source = useRunSource(live.collaboration, shown.run, known);
+  return <LiveResult {...live} shown={{ ...shown, source }} />;
 }
 
 /** The result under controls that it follows at once, and what becomes of a change. */
-function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) {
-  const { collaboration, asked, planned } = props;
-  const { data: analysis = props.analysis, mutate } = useAnalysis(
-    collaboration,
-    props.analysis.key,
-    props.analysis,
-  );
+function LiveResult(props: LiveResultProps) {
+  const { collaboration, analysis, asked, planned, onChanged, shown } = props;
   const finished = analysis.runs.find(isFinished);
   const newest = analysis.runs[0];
-  const { data: run = props.run } = useRun(collaboration, finished?.id, props.run ?? undefined);
-  const definition = useRunDefinition(collaboration, analysis, run, props.runPopulation);
+  const run = shown?.run ?? null;
+  const definition = shown?.definition;
 
   const inRecipe = useMemo(
     () => settingOfRecipe(analysis.recipe, planned),
@@ -98,9 +129,6 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
     () => (run && definition && settingOfRun(run, definition)) ?? inRecipe,
     [run, definition, inRecipe],
   );
-  const refresh = useCallback(() => {
-    void mutate();
-  }, [mutate]);
   const actions = useMemo(() => {
     const make = (placement: 'head' | 'foot') => (
       <ResultActions
@@ -115,12 +143,12 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
         onUndo={() => setMoved(undefined)}
         onSaved={() => {
           setMoved(undefined);
-          refresh();
+          onChanged();
         }}
       />
     );
     return { head: make('head'), foot: make('foot') };
-  }, [collaboration, analysis, finished, newest, isWhatIf, isUnsaved, refresh]);
+  }, [collaboration, analysis, finished, newest, isWhatIf, isUnsaved, onChanged]);
   // The same elements while a hand moves a control: nothing of them is drawn anew.
   const head = useMemo(
     () => (
@@ -139,27 +167,27 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
           analysis={analysis}
           run={finished}
           needsRun={!needsOnlyLive(analysis, run)}
-          onChanged={refresh}
+          onChanged={onChanged}
         />
       </>
     ),
-    [collaboration, analysis, finished, run, isUnsaved, actions, refresh],
+    [collaboration, analysis, finished, run, isUnsaved, actions, onChanged],
   );
 
   return (
     <>
       {head}
-      {run?.result && run.inputs && definition ? (
+      {shown ? (
         <ResultBody
-          key={run.id}
+          key={shown.run.id}
           collaboration={collaboration}
-          run={run}
-          inputs={run.inputs}
-          result={run.result}
+          run={shown.run}
+          inputs={shown.inputs}
+          result={shown.result}
           inRun={inRun}
           setting={setting}
           isUnsaved={isUnsaved}
-          agesCooling={run.id === props.run?.id ? props.agesCooling : null}
+          source={shown.source}
           canAsk={analysis.can.run}
           footActions={actions.foot}
           onSetting={setMoved}
@@ -169,7 +197,7 @@ function LiveResult(props: ResultScreenProps & { planned: PowerLawDefinition }) 
           collaboration={collaboration}
           analysis={analysis}
           isOnItsWay={isOnItsWay(newest)}
-          onChanged={refresh}
+          onChanged={onChanged}
         />
       )}
     </>

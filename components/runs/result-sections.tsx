@@ -30,6 +30,10 @@ interface ResultSectionsProps {
   onDefinition(definition: PowerLawDefinition): void;
 }
 
+/** Drawn anew at the pace of what they are given, however often the hand moves. */
+const CalmSensitivity = memo(SensitivitySection);
+const CalmStars = memo(StarsSection);
+
 /** What follows a drag. */
 interface Followed {
   shown: ShownResult;
@@ -66,7 +70,7 @@ const Sensitivity = memo(function Sensitivity(props: ResultSectionsProps) {
   );
   return (
     <div ref={place} className="min-w-0">
-      <SensitivitySection
+      <CalmSensitivity
         map={map}
         stars={result.stars}
         exposure={shown.exposure}
@@ -92,10 +96,22 @@ const LimitsAndDetections = memo(function LimitsAndDetections(props: ResultSecti
   const { inputs, result, run } = props;
   const place = useRef<HTMLDivElement>(null);
   const { shown } = useCalm(props.followed, { paceMs: PACE_MS, seen: place });
+  return (
+    <div ref={place} className="grid min-w-0 content-start md:gap-y-8">
+      <CalmLimits {...{ inputs, result, run, shown }} />
+    </div>
+  );
+});
+
+type CalmLimitsProps = Pick<ResultSectionsProps, 'inputs' | 'result' | 'run'> & {
+  shown: ShownResult;
+};
+
+const CalmLimits = memo(function CalmLimits({ inputs, result, run, shown }: CalmLimitsProps) {
   const { quantity, setting } = shown;
   const beside = shown.beside();
   return (
-    <div ref={place} className="grid min-w-0 content-start md:gap-y-8">
+    <>
       <FoldSection
         number={3}
         title="Limits by credible level"
@@ -136,7 +152,7 @@ const LimitsAndDetections = memo(function LimitsAndDetections(props: ResultSecti
         candidates={shown.candidates}
         ofRun={shown.isLive ? run.number : undefined}
       />
-    </div>
+    </>
   );
 });
 
@@ -146,7 +162,7 @@ const Stars = memo(function Stars(props: ResultSectionsProps) {
   const { shown } = useCalm(followed, { paceMs: PACE_MS, seen: place });
   return (
     <div ref={place} className="md:mt-8">
-      <StarsSection
+      <CalmStars
         inputs={inputs}
         runNumber={run.number}
         result={result}
