@@ -27,7 +27,7 @@ const freshBuild = () => ['.next', testDistFolder].find(isBuildFresh) ?? null;
  * @returns {Promise<Count>} a test a page
  */
 export async function checkBuild() {
-  if (freshBuild() === null) await buildWeb(testDistFolder, { isPatient: true });
+  if (freshBuild() === null) await buildWeb(testDistFolder);
   return countPages(measurePages(freshBuild() ?? testDistFolder));
 }
 

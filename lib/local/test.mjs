@@ -92,7 +92,10 @@ const groups = {
     unit: () => plainTests('unit'),
     reference: () => plainTests('reference'),
   },
-  /** They wait for a database or a worker at times, and leave that time to `behind`. */
+  /**
+   * They wait for a database or a worker at times. `behind` is built meanwhile, with as much right to
+   * a core: the demonstration, which takes what the others leave, begins when it is there.
+   */
   waiting: {
     database: () => databaseTests('database*'),
     workers: () => databaseTests('workers'),

@@ -38,16 +38,14 @@ export function nextEnvironment(/** @type {string} */ folder) {
  * Builds the web part into a folder; the mark is written last, so a broken build never counts.
  *
  * @param {string} folder
- * @param {{ isPatient?: boolean }} [options] whether it takes what time others leave
  * @returns {Promise<void>} throws LauncherProblem with the compiler's words
  */
-export async function buildWeb(folder, options = {}) {
+export async function buildWeb(folder) {
   const wanted = wantedMark();
   rmSync(markOf(folder), { force: true });
   // Without an address of a database: a page that reads it while being built would freeze its rows.
   const { DATABASE_URL: _, ...environment } = process.env;
   const { code, output } = await run(process.execPath, [nextProgram, 'build'], {
-    ...options,
     env: { ...environment, NODE_ENV: 'production', NO_COLOR: '1', ...nextEnvironment(folder) },
   });
   if (code !== 0) throw new LauncherProblem(`The web part could not be built:\n${output.trim()}`);
