@@ -47,11 +47,11 @@ const once = { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnR
  */
 export function useAgesCooling(
   collaboration: string,
-  run: RunView,
+  run: RunView | undefined,
   known: AgesCoolingAnswer | null,
   isReady: boolean,
 ): AgesCooling {
-  const { data: studies, mutate } = useRunStudies(collaboration, run.id);
+  const { data: studies, mutate } = useRunStudies(collaboration, run?.id);
   const asked = studies?.filter(({ settings }) => settings.kind === 'ages-cooling');
   const done = asked?.find(({ job }) => job.status === 'done');
   const newest = asked?.[0];
@@ -105,11 +105,11 @@ function wantedOf({ result }: AgesCoolingAnswer): Wanted[] {
 
 function useStacks(
   collaboration: string,
-  run: RunView,
+  run: RunView | undefined,
   studyId: string | undefined,
   wanted: Wanted[],
 ) {
-  const { inputs } = run;
+  const inputs = run?.inputs;
   return useSWR<FetchedStack[]>(
     studyId === undefined || wanted.length === 0 || !inputs
       ? null

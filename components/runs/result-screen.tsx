@@ -57,6 +57,9 @@ export function ResultScreen(props: ResultScreenProps) {
   const isLive =
     isPlainPowerLaw(planned) &&
     (runPopulation === null || isPlainPowerLaw(runPopulation.definition));
+  const shown = isLive && run && inRun ? shownRun(run, inRun) : undefined;
+  const known = run?.id === props.run?.id ? props.agesCooling : null;
+  const source = useRunSource(collaboration, shown?.run, known);
   if (!isLive) {
     return (
       <StoredResult
@@ -68,11 +71,12 @@ export function ResultScreen(props: ResultScreenProps) {
       />
     );
   }
-  const live = { collaboration, analysis, planned, asked: props.asked, onChanged };
-  if (!run?.result || !run.inputs || !inRun) return <LiveResult {...live} />;
-  const shown = { run, inputs: run.inputs, result: run.result, definition: inRun };
-  const known = run.id === props.run?.id ? props.agesCooling : null;
-  return <SourcedResult {...live} shown={shown} known={known} />;
+  return (
+    <LiveResult
+      {...{ collaboration, analysis, planned, onChanged, source, shown }}
+      asked={props.asked}
+    />
+  );
 }
 
 interface LiveResultProps {
@@ -82,8 +86,10 @@ interface LiveResultProps {
   planned: PowerLawDefinition;
   asked: LiveSetting | undefined;
   onChanged(): void;
-  /** A finished run, with the maps that its controls follow. */
-  shown?: ShownRun & { source: RunSource };
+  /** Undefined until there is a finished run. */
+  shown?: ShownRun;
+  /** What its controls follow. */
+  source: RunSource;
 }
 
 interface ShownRun {
@@ -93,19 +99,14 @@ interface ShownRun {
   definition: PowerLawDefinition;
 }
 
-type SourcedResultProps = Omit<LiveResultProps, 'shown'> & {
-  shown: ShownRun;
-  known: AgesCoolingAnswer | null;
-};
-
-function SourcedResult({ shown, known, ...live }: SourcedResultProps) {
-  const source = useRunSource(live.collaboration, shown.run, known);
-  return <LiveResult {...live} shown={{ ...shown, source }} />;
+function shownRun(run: RunView, definition: PowerLawDefinition): ShownRun | undefined {
+  const { inputs, result } = run;
+  return inputs && result ? { run, inputs, result, definition } : undefined;
 }
 
 /** The result under controls that it follows at once, and what becomes of a change. */
 function LiveResult(props: LiveResultProps) {
-  const { collaboration, analysis, asked, planned, onChanged, shown } = props;
+  const { collaboration, analysis, asked, planned, onChanged, shown, source } = props;
   const finished = analysis.runs.find(isFinished);
   const newest = analysis.runs[0];
   const run = shown?.run ?? null;
@@ -187,7 +188,7 @@ function LiveResult(props: LiveResultProps) {
           inRun={inRun}
           setting={setting}
           isUnsaved={isUnsaved}
-          source={shown.source}
+          source={source}
           canAsk={analysis.can.run}
           footActions={actions.foot}
           onSetting={setMoved}

@@ -21,17 +21,18 @@ export interface RunSource {
  * Asked for above the setting: a hand on a control moves nothing here, so nothing of it is looked up
  * anew with each frame.
  *
+ * @param run undefined while there is none: then nothing is asked for
  * @param known the answer about ages and cooling that the page brought along
  */
 export function useRunSource(
   collaboration: string,
-  run: RunView,
+  run: RunView | undefined,
   known: AgesCoolingAnswer | null,
 ): RunSource {
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);
   const agesCooling = useAgesCooling(collaboration, run, known, maps !== undefined);
   const { answer, stacks } = agesCooling;
-  const { inputs } = run;
+  const inputs = run?.inputs;
   const sample = useMemo(() => {
     const further = maps && answer && furtherOf(answer, maps, stacks);
     return maps && inputs ? sampleOf(inputs, maps, further ?? undefined) : undefined;

@@ -52,7 +52,7 @@ const isRightlyRefused = (output: string) =>
   /"status":\s*404|returned error: 40[34]|"needed":\[/.test(output);
 
 test('every example that reads is answered as it stands, in curl', async ({ baseURL }) => {
-  test.setTimeout(120_000);
+  test.setTimeout(300_000);
   const reads = examplesOf(baseURL ?? '').filter(({ operation }) => operation.method === 'GET');
   const wrong: string[] = [];
   let answered = 0;
