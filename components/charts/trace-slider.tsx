@@ -15,7 +15,7 @@ export interface TraceSliderProps {
   label?: ReactNode;
   /** Short form in the spoken value: "β". */
   symbol?: string;
-  /** The limit as a function of the parameter: the TRACK. Undefined while it is being computed. */
+  /** The limit as a function of the parameter: the track. Undefined while it is being computed. */
   trace?: LimitTrace;
   value: number;
   /** Place of the stored state, shown as a hollow dot while the value differs from it. */

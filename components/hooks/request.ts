@@ -87,7 +87,9 @@ async function send(
   const headers: Record<string, string> = { accept };
   if (body !== undefined) headers['content-type'] = 'application/json';
   if (content !== undefined) headers['content-type'] = content.type;
-  if ('ifMatch' in options && options.ifMatch) headers['if-match'] = options.ifMatch;
+  if ('ifMatch' in options && options.ifMatch !== undefined) {
+    headers['if-match'] = options.ifMatch;
+  }
   let response: Response;
   try {
     response = await fetch(path, {
