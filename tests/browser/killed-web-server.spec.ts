@@ -1,11 +1,14 @@
 import { createHash } from 'node:crypto';
 import { expect, test } from '@playwright/test';
+import type { ReleaseView } from '@/lib/schemas/releases';
 import { signedIn } from '../harden/visitor';
 import { signInOf } from './demonstration';
 import { OwnWebServer } from './own-web-server';
 
-const LAB = '/api/v1/collaborations/lantern-array';
+const COLLABORATIONS = '/api/v1/collaborations';
 const PART = { 'content-type': 'application/offset+octet-stream', 'tus-resumable': '1.0.0' };
+/** Of a step: shorter than any takes. */
+const FIRST_KILL_MS = 30;
 const MOST_DRAIN_MS = 10_000;
 const pause = (ms: number) => new Promise<void>((resolve) => setTimeout(resolve, ms));
 
@@ -18,18 +21,27 @@ const targets = (count: number, prefix: string) =>
   );
 
 /** A person's requests to a server that may be gone in between. */
-async function visitorOf(server: OwnWebServer) {
+async function visitorOf(
+  server: OwnWebServer,
+  role = 'owner of Lantern Array',
+  collaboration = 'lantern-array',
+) {
   const cookie = await signedIn(
     { address: server.address } as Parameters<typeof signedIn>[0],
-    signInOf('owner of Lantern Array'),
+    signInOf(role),
   );
   const ask = (path: string, init: RequestInit = {}) =>
-    fetch(`${server.address}${LAB}/${path}`, {
+    fetch(`${server.address}${COLLABORATIONS}/${collaboration}/${path}`, {
       ...init,
       headers: { cookie, origin: server.address, ...init.headers },
     });
   return {
     ask,
+    async get<Answer>(path: string): Promise<Answer> {
+      const answer = await ask(path);
+      expect(answer.ok, await answer.clone().text()).toBe(true);
+      return (await answer.json()) as Answer;
+    },
     async post<Answer>(path: string, body: unknown): Promise<Answer> {
       const answer = await ask(path, {
         method: 'POST',
@@ -123,6 +135,75 @@ test('kill -9 of the web server: an upload goes on at its offset, an import is w
   expect([0, 400]).toContain(await count());
   if ((await count()) === 0) await visitor.post(`uploads/${upload.id}/store`, {});
   expect(await count()).toBe(400);
+});
+
+test('kill -9 of the web server: a frozen run, a draft and a publication are whole or absent', async () => {
+  const of = (role: string) => visitorOf(server, role, 'breakwater');
+  const [author, statistician, owner] = await Promise.all(
+    ['author', 'statistician', 'owner'].map(of),
+  );
+  const title = 'Killed on the way';
+  const run = (await author.get<{ runs: { id: string }[] }>('analyses/A-2')).runs[0].id;
+
+  /**
+   * Takes a step again and again, the server killed a little later in it each time, until it is done:
+   * whatever was cut has left nothing.
+   */
+  async function killUntilDone<State>(
+    who: typeof owner,
+    [path, body]: [string, unknown],
+    stateOf: () => Promise<State>,
+    isDone: (state: State) => boolean,
+  ): Promise<State> {
+    const before = JSON.stringify(await stateOf());
+    for (let killAfterMs = FIRST_KILL_MS; ; killAfterMs *= 4) {
+      // What answers is loaded, so that the kill meets the step itself.
+      await who.ask(path);
+      const taking = who.post(path, body).catch(() => 'cut');
+      await pause(killAfterMs);
+      await server.end('SIGKILL');
+      await taking;
+      await server.begin();
+      const found = await stateOf();
+      if (isDone(found)) return found;
+      expect(JSON.stringify(found), `left of a step after ${killAfterMs} ms`).toBe(before);
+    }
+  }
+  const frozen = async () =>
+    (await author.get<{ frozen: { sha256: string } | null }>(`runs/${run}/freeze`)).frozen;
+  const releases = async () =>
+    (await owner.get<{ releases: ReleaseView[] }>('releases')).releases.filter(
+      (one) => one.title === title,
+    );
+  /** What anybody sees: its page and its files are there together or not at all. */
+  const published = async (code: string) => {
+    const page = await fetch(`${server.address}/r/${code}`);
+    return { state: (await releases())[0].state, status: page.status };
+  };
+
+  await killUntilDone(
+    author,
+    [`runs/${run}/freeze`, { reason: title }],
+    frozen,
+    (state) => state !== null,
+  );
+  const [draft] = await killUntilDone(
+    author,
+    ['releases', { title, authors: [{ name: 'Nobody' }], runIds: [run] }],
+    releases,
+    (all) => all.length > 0,
+  );
+  await statistician.post(`releases/${draft.id}/sign-off`, {});
+  await owner.post(`releases/${draft.id}/agree`, {});
+  await expect.poll(async () => (await releases())[0].state, { timeout: 60_000 }).toBe('checked');
+  const end = await killUntilDone(
+    owner,
+    [`releases/${draft.id}/publish`, {}],
+    () => published(draft.code),
+    ({ state }) => state === 'published',
+  );
+  expect(await releases()).toHaveLength(1);
+  expect(end.status).toBe(200);
 });
 
 test('SIGTERM: the web server finishes what it was asked, takes nothing new, and ends', async () => {
