@@ -62,7 +62,9 @@ export function useAgesCooling(
     return study?.result?.kind === 'ages-cooling' ? { id: study.id, result: study.result } : null;
   }, [isKnown, known, study]);
 
-  const [wantsAll, setWantsAll] = useState(false);
+  // Of one answer: a later run begins with the first stacks again.
+  const [wantedAllOf, setWantedAllOf] = useState<string>();
+  const wantsAll = answer !== null && wantedAllOf === answer.id;
   const isFirst = ({ cooling, age }: Wanted) => cooling === COOLING_AS_RUN || age === 0;
   const wanted = answer && isReady ? wantedOf(answer) : [];
   const first = useStacks(collaboration, run, answer?.id, wanted.filter(isFirst));
@@ -82,7 +84,7 @@ export function useAgesCooling(
   return useMemo(
     () => ({
       ...{ answer, open, stacks, error, isFetching, wantsAll },
-      wantAll: () => setWantsAll(true),
+      wantAll: () => setWantedAllOf(answer?.id),
       refresh: () => {
         void mutate();
       },

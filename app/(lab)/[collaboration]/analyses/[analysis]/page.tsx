@@ -1,8 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
-import { drawnRun } from '@/app/drawn-run';
-import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { settingFromQuery } from '@/components/runs/live-address';
 import { settingOfRecipe } from '@/components/runs/live-setting';
@@ -11,8 +9,8 @@ import type { Actor } from '@/lib/access/actor';
 import { NotFound } from '@/lib/errors';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import { getAnalysis } from '@/lib/services/analyses';
-import { findPopulationsById } from '@/lib/services/populations';
 import { findAgesCooling } from '@/lib/services/studies';
+import { newestRunOf } from './studies/study-inputs';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string }>;
@@ -27,15 +25,12 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
   const { collaboration, analysis: key } = await params;
   const actor = await currentActor(collaboration);
   const analysis = await findAnalysis(actor, key);
-  const finished = analysis.runs.find(isFinished);
-  const run = finished ? await drawnRun(actor, finished.id) : null;
-  const used = run?.inputs?.population.id;
   const { definition } = analysis.population;
   const asked = isPlainPowerLaw(definition)
     ? settingFromQuery(await searchParams, settingOfRecipe(analysis.recipe, definition))
     : undefined;
-  const populations = used ? await findPopulationsById(actor, [used]) : undefined;
-  const agesCooling = asked && finished ? await findAgesCooling(actor, finished.id) : null;
+  const { run, runPopulation } = await newestRunOf(actor, analysis);
+  const agesCooling = asked && run ? await findAgesCooling(actor, run.id) : null;
   return (
     <>
       <ResultScreen
@@ -43,7 +38,7 @@ export default async function AnalysisPage({ params, searchParams }: PageProps) 
         collaboration={actor.collaboration}
         analysis={analysis}
         run={run}
-        runPopulation={(used && populations?.get(used)) || null}
+        runPopulation={runPopulation}
         asked={asked}
         agesCooling={agesCooling}
       />

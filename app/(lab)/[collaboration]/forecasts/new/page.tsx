@@ -7,7 +7,7 @@ import { may } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { listAnalyses } from '@/lib/services/analyses';
 import { getStudy } from '@/lib/services/studies';
-import { studyInputs } from '../../analyses/[analysis]/studies/study-inputs';
+import { newestRunOf } from '../../analyses/[analysis]/studies/study-inputs';
 
 export const metadata: Metadata = { title: 'New forecast' };
 
@@ -28,9 +28,7 @@ export default async function NewForecastPage({
   const bases = analyses.filter(({ runs }) => runs.some(isFinished));
   const wanted = earlier?.run.analysisKey ?? analysis;
   const base = bases.find(({ key }) => key === wanted) ?? bases[0];
-  const { run = null, runPopulation = null } = base
-    ? await studyInputs(actor.collaboration, base.key)
-    : {};
+  const { run = null, runPopulation = null } = base ? await newestRunOf(actor, base) : {};
   return (
     <NewForecast
       collaboration={actor.collaboration}

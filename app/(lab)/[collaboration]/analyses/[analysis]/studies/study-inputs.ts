@@ -4,6 +4,7 @@ import { isFinished } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import type { Actor } from '@/lib/access/actor';
 import { NotFound } from '@/lib/errors';
+import type { AnalysisView } from '@/lib/schemas/analyses';
 import { studyQuerySchema } from '@/lib/schemas/studies';
 import type { StudyKind } from '@/lib/schemas/study-settings';
 import { getAnalysis } from '@/lib/services/analyses';
@@ -26,20 +27,24 @@ async function firstAnswer(actor: Actor, analysisKey: string, kind: StudyKind, a
   return { studies, study };
 }
 
+/** The newest finished run of an analysis, with the population that it was made under. */
+export async function newestRunOf(actor: Actor, { runs }: AnalysisView) {
+  const finished = runs.find(isFinished);
+  const run = finished ? await drawnRun(actor, finished.id) : null;
+  const used = run?.inputs?.population.id;
+  const populations = used ? await findPopulationsById(actor, [used]) : undefined;
+  return { run, runPopulation: (used && populations?.get(used)) || null };
+}
+
 /** An analysis with its newest finished run, which further questions are asked of. */
 export async function studyInputs(collaboration: string, analysisKey: string) {
   const actor = await currentActor(collaboration);
   try {
     const analysis = await getAnalysis(actor, analysisKey);
-    const finished = analysis.runs.find(isFinished);
-    const run = finished ? await drawnRun(actor, finished.id) : null;
-    const used = run?.inputs?.population.id;
-    const populations = used ? await findPopulationsById(actor, [used]) : undefined;
     return {
       collaboration: actor.collaboration,
       analysis,
-      run,
-      runPopulation: (used && populations?.get(used)) || null,
+      ...(await newestRunOf(actor, analysis)),
     };
   } catch (reason) {
     if (reason instanceof NotFound) notFound();
