@@ -1,5 +1,5 @@
 import type { Actor } from '@/lib/access/actor';
-import type { RateAnswer, RunView } from '@/lib/schemas/runs';
+import type { DrawnRun, RateAnswer } from '@/lib/schemas/runs';
 import { getRun } from '@/lib/services/runs';
 
 /** Digits of what a page draws: as many as exports carry, and a third of what was computed. */
@@ -21,14 +21,18 @@ function roundCurve(answer: RateAnswer): RateAnswer {
 
 /**
  * A run for a page: its curves, its mean map and the shares of its stars to six digits. Limits,
- * intervals and the nodes of the grid stay as they were computed.
+ * intervals and the nodes of the grid stay as they were computed. What no page draws stays behind.
  */
-export async function drawnRun(actor: Actor, id: string): Promise<RunView> {
+export async function drawnRun(actor: Actor, id: string): Promise<DrawnRun> {
   const run = await getRun(actor, id);
-  const { result } = run;
-  if (!result) return run;
+  const { inputs, result } = run;
+  if (!inputs || !result) return run;
   return {
     ...run,
+    inputs: {
+      ...inputs,
+      stars: inputs.stars.map(({ mapId: _row, mapChecksum: _bytes, ...star }) => star),
+    },
     result: {
       ...result,
       answer: roundCurve(result.answer),
@@ -38,7 +42,10 @@ export async function drawnRun(actor: Actor, id: string): Promise<RunView> {
         ...result.depth,
         surveys: result.depth.surveys.map((one) => ({ ...one, stars: roundAll(one.stars) })),
       },
-      starTable: result.starTable.map((one) => ({ ...one, probability: round(one.probability) })),
+      starTable: result.starTable.map(({ starId, probability }) => ({
+        starId,
+        probability: round(probability),
+      })),
     },
   };
 }

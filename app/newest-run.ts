@@ -1,6 +1,6 @@
 import { drawnRun } from '@/app/drawn-run';
 import type { Actor } from '@/lib/access/actor';
-import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import type { DrawnRun, RunSummary } from '@/lib/schemas/runs';
 import { listAnalyses } from '@/lib/services/analyses';
 
 export function isFinished(run: RunSummary): boolean {
@@ -8,7 +8,7 @@ export function isFinished(run: RunSummary): boolean {
 }
 
 /** The run that finished last in the whole collaboration: its maps serve previews and estimates. */
-export async function newestRun(actor: Actor): Promise<RunView | null> {
+export async function newestRun(actor: Actor): Promise<DrawnRun | null> {
   const { analyses } = await listAnalyses(actor);
   const finished = analyses
     .flatMap((analysis) => analysis.runs)

@@ -12,7 +12,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatSignificant } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import type { Estimated } from './estimated';
 import { listNames } from './name-words';
@@ -20,7 +20,7 @@ import { listNames } from './name-words';
 interface EstimateProps {
   collaboration: string;
   /** Newest finished run of the collaboration. */
-  run: RunView | null;
+  run: DrawnRun | null;
   surveys: SurveyView[];
   setting?: LiveSetting;
   /** Known before the choices were checked: what the estimate will be of. */

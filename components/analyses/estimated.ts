@@ -3,7 +3,7 @@ import { askedOf } from '@/components/runs/live-answer';
 import { restrictSample, sampleOf } from '@/components/runs/live-sample';
 import type { LiveSetting } from '@/components/runs/live-setting';
 import { type Answer, answerFromView, viewPopulation } from '@/lib/inference';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 
 /** The answer of the stored maps, or why they give none. */
 export interface Estimated {
@@ -17,7 +17,7 @@ export interface Estimated {
  * @param surveys their ids
  */
 export function estimateOf(
-  inputs: RunInputs,
+  inputs: DrawnInputs,
   maps: StarMaps,
   surveys: string[],
   setting: LiveSetting,

@@ -15,7 +15,7 @@ import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { CombinationView } from '@/lib/schemas/combinations';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SurveyList } from '@/lib/schemas/surveys';
 import { CandidateChoice } from './candidate-choice';
 import { CombinationChoice } from './combination-choice';
@@ -34,7 +34,7 @@ interface NewAnalysisProps {
   surveys: SurveyList;
   populations: ListedPopulation[];
   /** Newest finished run: its maps give the estimate. */
-  previewRun: RunView | null;
+  previewRun: DrawnRun | null;
   /** Population asked for in the address. */
   wanted?: string;
   /** Stored combination asked for in the address. */

@@ -1,5 +1,5 @@
 import type { Likelihood, RatePrior } from '@/lib/inference';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 
 /** A table that no run has filled yet: the recipe refuses it. */
 export const NO_TABLE: RatePrior = { law: 'tabulated', value: [], density: [], source: '' };
@@ -19,7 +19,7 @@ export function quantityFor(likelihood: Likelihood) {
  *
  * @throws RangeError in words for a run without a result, or of another quantity
  */
-export function priorOfRun(run: RunView, likelihood: Likelihood): RatePrior {
+export function priorOfRun(run: DrawnRun, likelihood: Likelihood): RatePrior {
   const { result, resultDigest, analysis, number } = run;
   const name = `${analysis.key} run ${number}`;
   if (!result || !resultDigest) throw new RangeError(`${name} has no result yet`);

@@ -1,7 +1,7 @@
 import { recipeOfRun } from '@/components/runs/run-recipe';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SideAddress } from './address';
 import { type ComparedRun, withoutDetections } from './differences';
 
@@ -9,7 +9,7 @@ export interface CompareSide {
   address: SideAddress;
   analysis: AnalysisView | null;
   /** The run that was asked for, with its result; null where there is none. */
-  run: RunView | null;
+  run: DrawnRun | null;
   population: ListedPopulation | null;
 }
 

@@ -12,7 +12,7 @@ import { formatRange } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import type { SideAddress } from './address';
 
 /** One side of a comparison, with everything that its number rests on. */
@@ -22,10 +22,10 @@ export interface ComparedRun {
   /** "A-31" where the run is the newest one, "A-31, run 2" otherwise. */
   name: string;
   title: string;
-  run: RunView;
-  inputs: RunInputs;
+  run: DrawnRun;
+  inputs: DrawnInputs;
   /** With its detections set aside where the side is a twin. */
-  result: RunResult;
+  result: DrawnResult;
   recipe: AnalysisRecipe;
   definition: ListedDefinition;
 }
@@ -115,7 +115,7 @@ export function compareInputs(sides: ComparedRun[]): ComparedInput[] {
 }
 
 /** How many of the stars have the same map in the first run. */
-function sampleWords(inputs: RunInputs, first: RunInputs): string {
+function sampleWords(inputs: DrawnInputs, first: DrawnInputs): string {
   const known = new Map(first.stars.map((star) => [star.starId, star.mapDigest]));
   const other = inputs.stars.filter((star) => known.get(star.starId) !== star.mapDigest).length;
   return other === 0 ? 'as in A' : `${other} other than in A`;
@@ -143,7 +143,7 @@ export function limitsByLevel(sides: ComparedRun[]): ComparedLevel[] {
 }
 
 /** The same run as if nothing had been counted: the run recorded that answer beside its own. */
-export function withoutDetections(result: RunResult): RunResult {
+export function withoutDetections(result: DrawnResult): DrawnResult {
   return {
     ...result,
     answer: result.zero,

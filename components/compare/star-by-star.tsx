@@ -18,10 +18,14 @@ export interface ComparedStar {
 /** Stars of either, those whose detection probability differs most first. */
 export function compareStars(a: ComparedRun, b: ComparedRun): ComparedStar[] {
   const stars = new Map<string, ComparedStar>();
-  for (const { starId, name, probability } of a.result.starTable) {
-    stars.set(starId, { starId, name, a: probability, b: null });
+  const nameOf = new Map(
+    [a, b].flatMap(({ inputs }) => inputs.stars.map(({ starId, name }) => [starId, name])),
+  );
+  for (const { starId, probability } of a.result.starTable) {
+    stars.set(starId, { starId, name: nameOf.get(starId) ?? '', a: probability, b: null });
   }
-  for (const { starId, name, probability } of b.result.starTable) {
+  for (const { starId, probability } of b.result.starTable) {
+    const name = nameOf.get(starId) ?? '';
     stars.set(starId, { starId, name, a: stars.get(starId)?.a ?? null, b: probability });
   }
   const change = (star: ComparedStar) => Math.abs((star.b ?? 0) - (star.a ?? 0));

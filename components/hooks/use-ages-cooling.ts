@@ -2,7 +2,7 @@
 
 import { useMemo, useState } from 'react';
 import useSWR from 'swr';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { AgesCoolingAnswer, StudySummary } from '@/lib/schemas/studies';
 import { apiPath, withQuery } from './api-path';
@@ -47,7 +47,7 @@ const once = { revalidateIfStale: false, revalidateOnFocus: false, revalidateOnR
  */
 export function useAgesCooling(
   collaboration: string,
-  run: RunView | undefined,
+  run: DrawnRun | undefined,
   known: AgesCoolingAnswer | null,
   isReady: boolean,
 ): AgesCooling {
@@ -107,7 +107,7 @@ function wantedOf({ result }: AgesCoolingAnswer): Wanted[] {
 
 function useStacks(
   collaboration: string,
-  run: RunView | undefined,
+  run: DrawnRun | undefined,
   studyId: string | undefined,
   wanted: Wanted[],
 ) {

@@ -1,7 +1,7 @@
 'use client';
 
 import useSWR from 'swr';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import { apiPath } from './api-path';
 import { ApiProblem } from './api-problem';
 import { requestBytes } from './request';
@@ -16,7 +16,7 @@ export interface StarMaps {
 }
 
 /** Fetched once a run: its maps can never change. */
-export function useRunMaps(collaboration: string, run: RunView | undefined) {
+export function useRunMaps(collaboration: string, run: DrawnRun | undefined) {
   const inputs = run?.inputs ?? undefined;
   return useSWR<StarMaps>(
     run === undefined || !inputs ? null : apiPath(collaboration, 'runs', run.id, 'maps'),

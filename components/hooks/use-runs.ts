@@ -1,14 +1,14 @@
 'use client';
 
 import useSWR from 'swr';
-import type { RunSummary, RunView } from '@/lib/schemas/runs';
+import type { DrawnRun, RunSummary } from '@/lib/schemas/runs';
 import { answer } from './answer';
 import { apiPath } from './api-path';
 import { request } from './request';
 
 /** A run never changes once it is finished, so it is fetched once. */
-export function useRun(collaboration: string, id: string | undefined, fallback?: RunView) {
-  return useSWR(
+export function useRun(collaboration: string, id: string | undefined, fallback?: DrawnRun) {
+  return useSWR<DrawnRun>(
     id === undefined ? null : apiPath(collaboration, 'runs', id),
     (path) => request(path, answer('runSchema')),
     {
@@ -20,7 +20,7 @@ export function useRun(collaboration: string, id: string | undefined, fallback?:
   );
 }
 
-export function fetchRun(collaboration: string, id: string): Promise<RunView> {
+export function fetchRun(collaboration: string, id: string): Promise<DrawnRun> {
   return request(apiPath(collaboration, 'runs', id), answer('runSchema'));
 }
 

@@ -11,7 +11,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import type { SystemsSummary } from '@/lib/population';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
 import type { AskedSetting } from './asked-setting';
@@ -31,7 +31,7 @@ interface SystemsScreenProps {
   versions: ListedPopulation[];
   version: ListedPopulation;
   summary: SystemsSummary;
-  previewRun: RunView | null;
+  previewRun: DrawnRun | null;
   query: Query;
   /** What the address asks for. */
   asked: AskedSetting;

@@ -9,7 +9,7 @@ import { sentenceOf } from '@/components/hooks/api-problem';
 import { request } from '@/components/hooks/request';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
 import { type LiveSample, sampleOf } from '@/components/runs/live-sample';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 
 export interface Preview {
   sample: LiveSample;
@@ -30,7 +30,7 @@ export interface PreviewState {
 /** Maps of the newest run, with the masses of its stars where the population asks for them. */
 export function usePreview(
   collaboration: string,
-  run: RunView | null,
+  run: DrawnRun | null,
   needsMasses: boolean,
 ): PreviewState {
   const { data: maps, error } = useRunMaps(collaboration, run ?? undefined);
@@ -66,7 +66,7 @@ export function usePreview(
 }
 
 /** Masses by star, from the first of the run's surveys that gives one, as a run takes them. */
-function useHostMasses(collaboration: string, run: RunView | null, isNeeded: boolean) {
+function useHostMasses(collaboration: string, run: DrawnRun | null, isNeeded: boolean) {
   const inputs = run?.inputs;
   const isKnown = inputs?.stars.every(({ hostMassMsun }) => hostMassMsun !== undefined) ?? false;
   const asks = isNeeded && inputs !== undefined && inputs !== null && !isKnown;

@@ -7,13 +7,13 @@ import { questionAddress } from '@/components/studies/kind-words';
 import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextAction } from '@/components/ui/text-action';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudySummary } from '@/lib/schemas/studies';
 import { formatDuration } from './time-words';
 
 interface AgesCoolingOfferProps {
   collaboration: string;
-  run: RunView;
+  run: DrawnRun;
   /** The newest question, while it has no answer. */
   open: StudySummary | undefined;
   canAsk: boolean;

@@ -1,9 +1,9 @@
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { describeLevel, type RateQuantity } from '@/lib/inference';
 import { formatInterval, formatLimit } from '@/lib/quantities/display';
-import type { RunResult } from '@/lib/schemas/runs';
+import type { DrawnResult } from '@/lib/schemas/runs';
 
-export type Beside = NonNullable<RunResult['beside']>;
+export type Beside = NonNullable<DrawnResult['beside']>;
 
 interface BesideTableProps {
   beside: Beside;

@@ -2,10 +2,10 @@ import { memo, type ReactNode } from 'react';
 import { StateMark } from '@/components/ui/state-mark';
 import { describeCandidates, type StatedCandidates } from '@/lib/inference';
 import { formatPercent } from '@/lib/quantities/display';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 
 interface ChecksStripProps {
-  inputs: RunInputs;
+  inputs: DrawnInputs;
   shareOutsideMaps: number;
   shareFlaggedCooling: number;
   /** Candidates without an answer that may lie in the ranges now, and what is done with them. */

@@ -4,11 +4,11 @@ import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { StatedCandidates } from '@/lib/inference';
 import { formatAsymmetric, formatPlain } from '@/lib/quantities/display';
-import type { DetectionView, RunInputs } from '@/lib/schemas/runs';
+import type { DetectionView, DrawnInputs } from '@/lib/schemas/runs';
 
 interface DetectionsSectionProps {
   companions: DetectionView[];
-  undecided: RunInputs['undecided'];
+  undecided: DrawnInputs['undecided'];
   /** Names that the limit counts now. */
   counted: string[];
   /** Names outside the ranges now. */
@@ -85,7 +85,7 @@ const plainOrDash = (value: number | null | undefined) =>
   value == null ? '–' : formatAsymmetric(value, 0, 0);
 
 function openStanding(
-  candidate: RunInputs['undecided'][number],
+  candidate: DrawnInputs['undecided'][number],
   stated: StatedCandidates | undefined,
   ofRun: number | undefined,
 ) {
@@ -106,7 +106,7 @@ function openStanding(
   );
 }
 
-function undecidedWords(candidate: RunInputs['undecided'][number]): string {
+function undecidedWords(candidate: DrawnInputs['undecided'][number]): string {
   if (candidate.insideRanges === null) return 'unvetted, place unknown';
   return candidate.insideRanges ? 'unvetted, inside' : 'unvetted, outside';
 }

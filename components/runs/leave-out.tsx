@@ -7,14 +7,14 @@ import { TextAction } from '@/components/ui/text-action';
 import type { PopulationView, RateQuantity } from '@/lib/inference';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatPercent } from '@/lib/quantities/display';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 import { keptFromHash, keptToHash } from './kept-address';
 import { limitWithout, withoutWords } from './limit-without';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
 
 interface LeaveOutProps {
-  inputs: RunInputs;
+  inputs: DrawnInputs;
   runNumber: number;
   stars: StarDot[];
   /** Undefined until the maps are there. */
@@ -98,7 +98,7 @@ export function LeaveOut(props: LeaveOutProps) {
 }
 
 /** Sets of stars that are kept to compare with: the address of the page carries them. */
-function useKept(run: number, inputs: RunInputs) {
+function useKept(run: number, inputs: DrawnInputs) {
   const names = useMemo(() => inputs.stars.map(({ name }) => name), [inputs]);
   const [kept, setKept] = useState<readonly ReadonlySet<string>[]>([]);
   // Not before the first paint: the server has drawn it, and does not know this part of the address.
@@ -163,7 +163,7 @@ interface Group {
 }
 
 /** Surveys, hosts, then star by star: what the keyboard chooses where the pointer draws a frame. */
-function groupsOf(inputs: RunInputs, stars: StarDot[]): Group[] {
+function groupsOf(inputs: DrawnInputs, stars: StarDot[]): Group[] {
   const ofSurvey = inputs.surveys.map(({ id, name }): Group => {
     const names = inputs.stars.filter(({ surveys }) => surveys.includes(id)).map((one) => one.name);
     return {

@@ -1,10 +1,10 @@
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { RateQuantity } from '@/lib/inference';
 import { formatPlain, formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
-import type { RunResult } from '@/lib/schemas/runs';
+import type { DrawnResult } from '@/lib/schemas/runs';
 
 interface LevelTableProps {
-  levels: RunResult['levels'];
+  levels: DrawnResult['levels'];
   credibleLevel: number;
   quantity: RateQuantity;
   detections: number;
@@ -95,7 +95,7 @@ function CopyOfRow({
   quantity,
   copyOf,
 }: {
-  row: RunResult['levels'][number];
+  row: DrawnResult['levels'][number];
   quantity: RateQuantity;
   copyOf: NonNullable<LevelTableProps['copyOf']>;
 }) {

@@ -16,7 +16,7 @@ import {
   TABLE_LEVELS,
   whyNoColumn,
 } from '@/lib/inference';
-import type { RunResult } from '@/lib/schemas/runs';
+import type { DrawnResult } from '@/lib/schemas/runs';
 import type { Beside } from './beside-table';
 import type { LimitAnswer } from './limit-answer';
 import type { LiveSample } from './live-sample';
@@ -30,7 +30,7 @@ export interface LiveAnswer {
   /** The same sample with every detection set aside. */
   zero: LimitAnswer;
   /** Two more posteriors: made when the table asks for them, and then kept. */
-  levels(): RunResult['levels'];
+  levels(): DrawnResult['levels'];
   /** Why the table has no column for the other quantity; null: it has one. */
   missingColumn: string | null;
   /** Limits without a prior: made when asked for, and then kept. */
@@ -116,7 +116,7 @@ function tableOfLevels(
   asked: AnswerSettings,
   full: Answer,
   none: Answer,
-): RunResult['levels'] {
+): DrawnResult['levels'] {
   const likelihood = otherLikelihood(asked.likelihood);
   const prior = priorFor(asked.prior, likelihood);
   const other = (changes: Partial<AnswerSettings>) =>

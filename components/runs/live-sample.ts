@@ -1,7 +1,7 @@
 import type { FetchedStack } from '@/components/hooks/use-ages-cooling';
 import type { StarMaps } from '@/components/hooks/use-run-maps';
 import type { Detection, OpenCandidate } from '@/lib/inference';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 import { COOLING_AS_RUN } from '@/lib/schemas/stack-choices';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { MapGrid } from '@/lib/sensitivity';
@@ -19,7 +19,7 @@ export interface FurtherMaps {
 /** What a run was made from, as the live controls need it. */
 export interface LiveSample {
   grid: MapGrid;
-  stars: RunInputs['stars'];
+  stars: DrawnInputs['stars'];
   /** Shape [star, mass, semi-major axis], completeness times 65535. */
   maps: Uint16Array;
   /** The same under other ages and cooling models, where a run's answer keeps some. */
@@ -48,7 +48,7 @@ export function furtherOf(
   };
 }
 
-export function sampleOf(inputs: RunInputs, maps: StarMaps, further?: FurtherMaps): LiveSample {
+export function sampleOf(inputs: DrawnInputs, maps: StarMaps, further?: FurtherMaps): LiveSample {
   const indexOf = new Map(inputs.stars.map((star, index) => [star.starId, index]));
   return {
     grid: { massMjup: maps.massMjup, semiMajorAxisAu: maps.semiMajorAxisAu },

@@ -4,13 +4,13 @@ import { FormulaWords } from '@/components/ui/formula-words';
 import { ProvenanceChain, type ProvenanceStep } from '@/components/ui/provenance-chain';
 import { useDay } from '@/components/ui/time-zone';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
-import type { RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { durationOf, fingerprint } from './time-words';
 
 interface ProvenanceSectionProps {
   collaboration: string;
-  run: RunView;
-  result: RunResult;
+  run: DrawnRun;
+  result: DrawnResult;
   /** The page shows a change that the run does not know. */
   isLive?: boolean;
 }
@@ -39,7 +39,7 @@ export const ProvenanceSection = memo(function ProvenanceSection(props: Provenan
 
 function provenanceSteps(
   collaboration: string,
-  run: RunView,
+  run: DrawnRun,
   day: (moment: string) => string,
 ): ProvenanceStep[] {
   const { inputs, result } = run;
@@ -108,7 +108,7 @@ function leftOutWords(count: number): string | undefined {
 }
 
 /** What stands in no step: how maps were combined and judged, and the whole digests. */
-function ProvenanceDetails({ run, result }: { run: RunView; result: RunResult }) {
+function ProvenanceDetails({ run, result }: { run: DrawnRun; result: DrawnResult }) {
   const { inputs } = run;
   const rows = [
     ['statement', result.statement.sentence],

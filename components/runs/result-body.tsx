@@ -24,7 +24,7 @@ import { TextAction } from '@/components/ui/text-action';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { ChecksStrip } from './checks-strip';
 import type { LiveSample } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
@@ -58,9 +58,9 @@ const FurtherQuestions = dynamic(
 
 interface ResultBodyProps {
   collaboration: string;
-  run: RunView;
-  inputs: RunInputs;
-  result: RunResult;
+  run: DrawnRun;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   /** The setting that the run was made with. */
   inRun: LiveSetting;
   setting: LiveSetting;
@@ -261,9 +261,9 @@ const ResultPlate = memo(function ResultPlate({
   grid,
   onDefinition,
 }: {
-  run: RunView;
-  inputs: RunInputs;
-  result: RunResult;
+  run: DrawnRun;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   shown: ShownResult;
   grid: { massMjup: Float64Array; semiMajorAxisAu: Float64Array };
   onDefinition(definition: PowerLawDefinition): void;

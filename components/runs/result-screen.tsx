@@ -10,7 +10,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { AnalysisState } from './analysis-state';
 import { isSameSetting, type LiveSetting, settingOfRecipe, settingToQuery } from './live-setting';
@@ -30,7 +30,7 @@ interface ResultScreenProps {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run, with its result. */
-  run: RunView | null;
+  run: DrawnRun | null;
   /** The population that this run used. */
   runPopulation: ListedPopulation | null;
   /** What the address asks for; undefined where the population has no live controls. */
@@ -93,13 +93,13 @@ interface LiveResultProps {
 }
 
 interface ShownRun {
-  run: RunView;
-  inputs: RunInputs;
-  result: RunResult;
+  run: DrawnRun;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   definition: PowerLawDefinition;
 }
 
-function shownRun(run: RunView, definition: PowerLawDefinition): ShownRun | undefined {
+function shownRun(run: DrawnRun, definition: PowerLawDefinition): ShownRun | undefined {
   const { inputs, result } = run;
   return inputs && result ? { run, inputs, result, definition } : undefined;
 }
@@ -209,7 +209,7 @@ function LiveResult(props: LiveResultProps) {
 function useRunDefinition(
   collaboration: string,
   analysis: AnalysisView,
-  run: RunView | null,
+  run: DrawnRun | null,
   known: ListedPopulation | null,
 ) {
   const wanted = run?.inputs?.population.id;
@@ -222,13 +222,13 @@ function useRunDefinition(
   return found && isPlainPowerLaw(found) ? found : undefined;
 }
 
-function settingOfRun(run: RunView, definition: PowerLawDefinition): LiveSetting | undefined {
+function settingOfRun(run: DrawnRun, definition: PowerLawDefinition): LiveSetting | undefined {
   const recipe = recipeOfRun(run);
   return recipe && settingOfRecipe(recipe, definition);
 }
 
 /** Whether the recipe differs from the run in nothing that needs new maps. */
-function needsOnlyLive(analysis: AnalysisView, run: RunView | null): boolean {
+function needsOnlyLive(analysis: AnalysisView, run: DrawnRun | null): boolean {
   const recipe = recipeOfRun(run);
   if (!recipe) return false;
   return (

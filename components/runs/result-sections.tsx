@@ -11,7 +11,7 @@ import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { BesideTable } from './beside-table';
 import { DetectionsSection } from './detections-section';
 import { LevelTable, percentBelow } from './level-table';
@@ -21,9 +21,9 @@ import type { ShownResult } from './shown-result';
 import { StarsSection } from './stars-section';
 
 interface ResultSectionsProps {
-  inputs: RunInputs;
-  result: RunResult;
-  run: RunView;
+  inputs: DrawnInputs;
+  result: DrawnResult;
+  run: DrawnRun;
   sample?: LiveSample;
   map: MapData;
   followed: Followed;

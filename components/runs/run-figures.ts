@@ -1,14 +1,14 @@
 import type { FigureSettings } from '@/components/charts/figure-context';
 import { describeLevel, describePopulation, describePrior } from '@/lib/inference';
 import { formatLimit, formatRange } from '@/lib/quantities/display';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import type { ShownResult } from './shown-result';
 
 /** What the figures of a run say: of the recorded result, or of a live setting that is not kept. */
 export function runFigures(
-  run: RunView,
-  inputs: RunInputs,
-  result: RunResult,
+  run: DrawnRun,
+  inputs: DrawnInputs,
+  result: DrawnResult,
   shown: ShownResult,
 ): Omit<FigureSettings, 'toPdf'> {
   if (!shown.isLive || shown.isOfRun) return recordedFigures(run, inputs, result);
@@ -26,9 +26,9 @@ export function runFigures(
 
 /** What the figures of a run say of the result that it recorded. */
 export function recordedFigures(
-  run: RunView,
-  inputs: RunInputs,
-  result: RunResult,
+  run: DrawnRun,
+  inputs: DrawnInputs,
+  result: DrawnResult,
 ): Omit<FigureSettings, 'toPdf'> {
   const name = nameOf(run);
   const standing = run.frozen ?? 'draft';
@@ -42,10 +42,10 @@ export function recordedFigures(
   };
 }
 
-const nameOf = (run: RunView) => `${run.analysis.key}, run ${run.number}`;
-const fileOf = (run: RunView) => `${run.analysis.key}-run-${run.number}`;
+const nameOf = (run: DrawnRun) => `${run.analysis.key}, run ${run.number}`;
+const fileOf = (run: DrawnRun) => `${run.analysis.key}-run-${run.number}`;
 
-function sampleWords({ surveys }: RunInputs, { stars }: RunResult): string {
+function sampleWords({ surveys }: DrawnInputs, { stars }: DrawnResult): string {
   return `${surveys.map(({ name }) => name).join(', ')}: ${stars} stars.`;
 }
 

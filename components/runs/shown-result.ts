@@ -1,6 +1,6 @@
 import type { RateQuantity, StatedCandidates } from '@/lib/inference';
 import { isInside } from '@/lib/population';
-import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import type { Beside } from './beside-table';
 import { agesInWords, coolingInWords } from './input-words';
@@ -15,7 +15,7 @@ export interface ShownResult {
   quantity: RateQuantity;
   answer: LimitAnswer;
   zero: LimitAnswer;
-  levels(): RunResult['levels'];
+  levels(): DrawnResult['levels'];
   atTenthOfFloor: number | null;
   counted: { name: string; starId: string }[];
   /** Candidates without an answer, and what the limit did with them; undefined: there are none. */
@@ -42,8 +42,8 @@ export interface ShownResult {
 }
 
 export function showResult(
-  inputs: RunInputs,
-  result: RunResult,
+  inputs: DrawnInputs,
+  result: DrawnResult,
   inRun: LiveSetting,
   setting: LiveSetting,
   outcome: LiveOutcome | undefined,
@@ -106,8 +106,8 @@ export function showResult(
 }
 
 function setAside(
-  inputs: RunInputs,
-  isPossible: (one: RunInputs['undecided'][number]) => boolean,
+  inputs: DrawnInputs,
+  isPossible: (one: DrawnInputs['undecided'][number]) => boolean,
 ): StatedCandidates | undefined {
   if (inputs.undecided.length === 0) return undefined;
   const entries = inputs.undecided
@@ -117,13 +117,13 @@ function setAside(
 }
 
 /** Candidates without an answer, and what the run itself did with them. */
-export function storedCandidates(inputs: RunInputs, { candidates }: RunResult) {
+export function storedCandidates(inputs: DrawnInputs, { candidates }: DrawnResult) {
   return candidates ?? setAside(inputs, ({ insideRanges }) => insideRanges !== false);
 }
 
 /** By the present ranges, where a candidate's place is known. */
 function liveCandidates(
-  inputs: RunInputs,
+  inputs: DrawnInputs,
   { candidates, detections, definition }: LiveSetting,
   counted: StatedCandidates['entries'],
 ): StatedCandidates | undefined {
@@ -140,6 +140,6 @@ function liveCandidates(
 
 const TABLE = 'Table of limits: ';
 
-function storedReason({ statement }: RunResult): string | null {
+function storedReason({ statement }: DrawnResult): string | null {
   return statement.conditions.find((one) => one.startsWith(TABLE))?.slice(TABLE.length) ?? null;
 }

@@ -6,14 +6,14 @@ import { halfOfTheSum, StarDots } from '@/components/charts/star-dots';
 import { FoldSection } from '@/components/ui/fold-section';
 import { SeriesKey } from '@/components/ui/series-key';
 import type { PopulationView, RateQuantity } from '@/lib/inference';
-import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult } from '@/lib/schemas/runs';
 import { LeaveOut } from './leave-out';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
 
 interface StarsSectionProps {
-  inputs: RunInputs;
-  result: RunResult;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   /** Undefined until the maps are there: then the run's own numbers are shown. */
   sample?: LiveSample;
   view?: PopulationView;

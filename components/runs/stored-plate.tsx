@@ -7,7 +7,7 @@ import { Conditions, conditionRow, Plate, StatementNumber } from '@/components/u
 import { describeLevel } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { ListedDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { savedAnswer } from './limit-answer';
 import { posteriorData } from './posterior-data';
 import { lead } from './result-statement';
@@ -15,10 +15,10 @@ import { recipeOfRun } from './run-recipe';
 
 interface StoredPlateProps {
   collaboration: string;
-  run: RunView;
+  run: DrawnRun;
   definition: ListedDefinition;
-  inputs: RunInputs;
-  result: RunResult;
+  inputs: DrawnInputs;
+  result: DrawnResult;
 }
 
 /** The recorded statement beside its posterior. */

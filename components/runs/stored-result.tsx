@@ -7,7 +7,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { AnalysisState } from './analysis-state';
 import { ChecksStrip } from './checks-strip';
 import { NoRunPlate } from './no-run-plate';
@@ -24,7 +24,7 @@ interface StoredResultProps {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run, with its result. */
-  run: RunView | null;
+  run: DrawnRun | null;
   /** The population of that run. */
   definition: ListedDefinition;
   onChanged(): void;
@@ -74,10 +74,10 @@ export function StoredResult(props: StoredResultProps) {
 
 interface StoredBodyProps {
   collaboration: string;
-  run: RunView;
+  run: DrawnRun;
   definition: ListedDefinition;
-  inputs: RunInputs;
-  result: RunResult;
+  inputs: DrawnInputs;
+  result: DrawnResult;
 }
 
 function StoredBody({ collaboration, run, definition, inputs, result }: StoredBodyProps) {

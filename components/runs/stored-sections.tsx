@@ -2,7 +2,7 @@ import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
 import type { ListedDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { BesideTable } from './beside-table';
 import { DetectionsSection } from './detections-section';
 import { LevelTable } from './level-table';
@@ -14,10 +14,10 @@ import { useStoredMap } from './use-map-figures';
 
 interface StoredSectionsProps {
   collaboration: string;
-  run: RunView;
+  run: DrawnRun;
   definition: ListedDefinition;
-  inputs: RunInputs;
-  result: RunResult;
+  inputs: DrawnInputs;
+  result: DrawnResult;
 }
 
 /** Sections 2 to 5 of a recorded result, from what its run stored. */

@@ -1,16 +1,16 @@
 import type { DepthSeries } from '@/components/charts/depth-chart';
 import type { PopulationWeights } from '@/lib/population';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 import type { LiveSample } from './live-sample';
 
 /** Maps summed over the stars of each survey; a star of several is shared out among them. */
 export interface SurveySum {
-  survey: RunInputs['surveys'][number];
+  survey: DrawnInputs['surveys'][number];
   /** Shape [mass, semi-major axis] [stars]. */
   summed: Float64Array;
 }
 
-export function sumBySurvey(sample: LiveSample, surveys: RunInputs['surveys']): SurveySum[] {
+export function sumBySurvey(sample: LiveSample, surveys: DrawnInputs['surveys']): SurveySum[] {
   const size = sample.grid.massMjup.length * sample.grid.semiMajorAxisAu.length;
   const sums = surveys.map((survey) => ({ survey, summed: new Float64Array(size) }));
   sample.stars.forEach((star, index) => {

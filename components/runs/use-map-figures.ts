@@ -6,7 +6,7 @@ import type { MapData } from '@/components/charts/map-contours';
 import { useCalm } from '@/components/hooks/use-calm';
 import { useLoaded } from '@/components/hooks/use-loaded';
 import { populationWeights } from '@/lib/population';
-import type { RunInputs, RunResult } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult } from '@/lib/schemas/runs';
 import type { LiveSample } from './live-sample';
 import type { LiveSetting } from './live-setting';
 import { orNull } from './or-null';
@@ -14,7 +14,7 @@ import { depthOf, meanOfSums, profileAlong, sumBySurvey } from './survey-sums';
 import { isAsRun } from './under';
 
 /** The mean map and the depth by survey, as a run stored them. */
-export function useStoredMap(result: RunResult, inputs: RunInputs) {
+export function useStoredMap(result: DrawnResult, inputs: DrawnInputs) {
   const map: MapData = useMemo(
     () => ({
       massMjup: Float64Array.from(result.meanMap.massMjup),
@@ -35,8 +35,8 @@ const PACE = { paceMs: 300 };
  * under the setting's ages and cooling model, at a pace of their own.
  */
 export function useMapFigures(
-  result: RunResult,
-  inputs: RunInputs,
+  result: DrawnResult,
+  inputs: DrawnInputs,
   sample: LiveSample | undefined,
   setting: LiveSetting,
 ) {
@@ -81,7 +81,7 @@ export function useMapFigures(
 }
 
 /** Until the maps are there: the depth that the run itself stored. */
-function savedDepth(result: RunResult, inputs: RunInputs): DepthSeries[] {
+function savedDepth(result: DrawnResult, inputs: DrawnInputs): DepthSeries[] {
   return result.depth.surveys.flatMap(({ id, stars }) => {
     const survey = inputs.surveys.find((one) => one.id === id);
     return survey

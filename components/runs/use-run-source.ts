@@ -3,7 +3,7 @@
 import { useMemo } from 'react';
 import { type AgesCooling, useAgesCooling } from '@/components/hooks/use-ages-cooling';
 import { useRunMaps } from '@/components/hooks/use-run-maps';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
 import { furtherOf, type LiveSample, sampleOf } from './live-sample';
 
@@ -26,7 +26,7 @@ export interface RunSource {
  */
 export function useRunSource(
   collaboration: string,
-  run: RunView | undefined,
+  run: DrawnRun | undefined,
   known: AgesCoolingAnswer | null,
 ): RunSource {
   const { data: maps, error, mutate } = useRunMaps(collaboration, run);

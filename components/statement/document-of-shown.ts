@@ -2,12 +2,12 @@ import type { ShownResult } from '@/components/runs/shown-result';
 import { countingWords } from '@/lib/inference/run-statement';
 import { priorTop } from '@/lib/inference/statement';
 import { type LimitDocument, limitDocument } from '@/lib/inference/statement-document';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 
 interface ShownOf {
-  run: RunView;
-  inputs: RunInputs;
-  result: RunResult;
+  run: DrawnRun;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   shown: ShownResult;
   /** Another level of the table, with its limit; the shown one when absent. */
   row?: { level: number; limit: number };

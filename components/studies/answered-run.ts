@@ -4,7 +4,7 @@ import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { ResultOf } from '@/lib/schemas/study-results';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
@@ -13,7 +13,7 @@ import type { AnswerProps, AskedRun } from './kind-entry';
 interface RunAndPopulation {
   collaboration: string;
   analysis: AnalysisView;
-  run: RunView;
+  run: DrawnRun;
   definition: ListedPopulation | null;
 }
 
@@ -38,7 +38,7 @@ interface AnsweredRunOptions {
   collaboration: string;
   analysis: AnalysisView;
   /** The newest finished run and its population, which are at hand. */
-  run: RunView | null;
+  run: DrawnRun | null;
   runPopulation: ListedPopulation | null;
   study: StudyView | undefined;
 }

@@ -4,7 +4,7 @@ import type { Fault } from '@/lib/errors';
 import type { RateQuantity } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedDefinition } from '@/lib/schemas/populations';
-import type { RunInputs, RunResult, RunView } from '@/lib/schemas/runs';
+import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import type { ResultOf } from '@/lib/schemas/study-results';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
@@ -13,9 +13,9 @@ import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
 export interface AskedRun {
   collaboration: string;
   analysis: AnalysisView;
-  run: RunView;
-  inputs: RunInputs;
-  result: RunResult;
+  run: DrawnRun;
+  inputs: DrawnInputs;
+  result: DrawnResult;
   /** The population of the run; null until it is known. */
   definition: ListedDefinition | null;
   quantity: RateQuantity;

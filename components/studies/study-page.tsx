@@ -13,7 +13,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudySummary, StudyView } from '@/lib/schemas/studies';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
 import { AnswerExports } from './answer-exports';
@@ -30,7 +30,7 @@ export interface StudyPageProps<Kind extends StudyKind> {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run; null while there is none. */
-  run: RunView | null;
+  run: DrawnRun | null;
   runPopulation: ListedPopulation | null;
   /** The answer that the address names. */
   answerId?: string;

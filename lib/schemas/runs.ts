@@ -243,3 +243,17 @@ export const runSchema = runSummarySchema.extend({
   result: runResultSchema.nullable(),
 });
 export type RunView = z.infer<typeof runSchema>;
+
+/** What a page draws of a run's inputs: of each star not the map's row, which nothing on it names. */
+export type DrawnInputs = Omit<RunInputs, 'stars'> & {
+  stars: Omit<RunInputs['stars'][number], 'mapId' | 'mapChecksum'>[];
+};
+/** What a page draws of a result: names and surveys of its stars are in the inputs. */
+export type DrawnResult = Omit<RunResult, 'starTable'> & {
+  starTable: Pick<RunResult['starTable'][number], 'starId' | 'probability'>[];
+};
+/** A run as a page is given it; every run is one. */
+export type DrawnRun = Omit<RunView, 'inputs' | 'result'> & {
+  inputs: DrawnInputs | null;
+  result: DrawnResult | null;
+};

@@ -10,7 +10,7 @@ import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import { AnswerExports } from '../answer-exports';
 import { answerFigures } from '../answer-files';
@@ -25,7 +25,7 @@ interface ForecastScreenProps {
   study: StudyView;
   analysis: AnalysisView;
   /** Newest finished run of the analysis; the forecast may rest on an earlier one. */
-  run: RunView | null;
+  run: DrawnRun | null;
   runPopulation: ListedPopulation | null;
   canAsk: boolean;
 }

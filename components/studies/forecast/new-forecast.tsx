@@ -17,7 +17,7 @@ import { StateMark } from '@/components/ui/state-mark';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { RunView } from '@/lib/schemas/runs';
+import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
 import { askedRun } from '../answered-run';
 
@@ -34,7 +34,7 @@ interface NewForecastProps {
   /** Analyses with a finished run. */
   bases: AnalysisView[];
   /** The one to start from, with its run; null without bases. */
-  first: { key: string; run: RunView; population: ListedPopulation | null } | null;
+  first: { key: string; run: DrawnRun; population: ListedPopulation | null } | null;
   /** An earlier forecast whose settings are taken over. */
   start?: SettingsOf<'forecast'>;
   /** Why this person cannot ask. */

@@ -4,7 +4,7 @@ import type { FieldAxis } from '@/components/charts/limit-field-chart';
 import { formatIndex } from '@/components/populations/law-notation';
 import { fromLogIndex } from '@/lib/population';
 import { formatPlain } from '@/lib/quantities/display';
-import type { RunInputs } from '@/lib/schemas/runs';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
 import type { AskedRun } from '../kind-entry';
 
@@ -98,7 +98,7 @@ export function ownValue(over: SweepParameter, { definition }: AskedRun): number
 
 /** A span worth asking for: the grid on one side, the other end of the run's range on the other. */
 export function usualSpan(over: SweepParameter, asked: AskedRun): { from: number; to: number } {
-  const { massMjup, semiMajorAxisAu } = asked.inputs.grid as RunInputs['grid'];
+  const { massMjup, semiMajorAxisAu } = asked.inputs.grid as DrawnInputs['grid'];
   const last = (nodes: number[]) => nodes[nodes.length - 1];
   const round = (value: number) => Number(value.toPrecision(2));
   const { definition } = asked;
