@@ -33,7 +33,9 @@ const choose = 'choose, press a dot or frame dots';
 export function LeaveOut(props: LeaveOutProps) {
   const { inputs, stars, sample, view, setting, limit, quantity, chosen, onChosen } = props;
   const [kept, setKept] = useKept(props.runNumber, inputs);
-  const groups = useMemo(() => groupsOf(inputs, stars), [inputs, stars]);
+  // Hundreds of choices, none of which has an answer before the maps are there.
+  const isReady = sample !== undefined;
+  const groups = useMemo(() => (isReady ? groupsOf(inputs, stars) : []), [isReady, inputs, stars]);
   const without = useMemo(
     () => (sample && view ? limitWithout(sample, view, setting, chosen) : undefined),
     [sample, view, setting, chosen],
