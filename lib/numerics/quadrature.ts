@@ -5,6 +5,7 @@ export interface QuadratureRule {
 }
 
 const legendreRules = new Map<number, QuadratureRule>();
+const hermiteRules = new Map<number, QuadratureRule>();
 
 /**
  * Gauss–Legendre rule on [-1, 1]: exact for polynomials up to degree 2n - 1.
@@ -73,6 +74,8 @@ export function gaussHermite(n: number): QuadratureRule {
   if (!Number.isInteger(n) || n < 1 || n > 64) {
     throw new RangeError(`n must be an integer between 1 and 64, got ${n}`);
   }
+  const known = hermiteRules.get(n);
+  if (known) return known;
   // Sturm bisection: the recurrence changes sign once per node passed, so no start value can fail.
   const bound = 2 * Math.sqrt(n) + 1;
   const nodes = new Float64Array(n);
@@ -100,7 +103,9 @@ export function gaussHermite(n: number): QuadratureRule {
     }
     weights[i] = 1 / total;
   }
-  return { nodes, weights };
+  const rule = { nodes, weights };
+  hermiteRules.set(n, rule);
+  return rule;
 }
 
 /** How many roots of the n-th Hermite polynomial lie below x (signs of the Sturm sequence). */

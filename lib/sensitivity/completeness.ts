@@ -62,7 +62,8 @@ export function computeCompletenessMap(
     ? integrateByLevels(star, prepared, cooling, grid.massMjup, logAxis, settings)
     : direct(prepared, grid.massMjup.length, logAxis, settings);
   for (let i = 0; i < completeness.length; i++) {
-    completeness[i] = Math.min(1, Math.max(0, completeness[i]));
+    if (completeness[i] <= 0) completeness[i] = 0;
+    else if (completeness[i] > 1) completeness[i] = 1;
   }
   const removed = removeUnstableNodes(completeness, grid, star, settings);
   return {

@@ -112,7 +112,39 @@ export function coolingReport(
       };
     }
   }
+  if (relation.kind === 'table' && coversAll(relation.table, band, massMjup)) {
+    const { range } = ageRange(relation);
+    const isInside = (age: number) => age >= range[0] && age <= range[1];
+    if (agesMyr.every(isInside)) {
+      return {
+        massNodesOutside: 0,
+        ageNodesClamped: 0,
+        lawNodesOutsideValidity: 0,
+        flaggedMassNodes: [],
+      };
+    }
+  }
   return coolNodes(relation, band, massMjup, agesMyr, policy, starName).report;
+}
+
+const completeBands = new WeakMap<Float64Array, boolean>();
+
+/** Whether a band has no gap and the masses lie within the table, so that nothing can be flagged. */
+function coversAll(table: CoolingTable, band: string, massMjup: Float64Array): boolean {
+  checkCoolingTable(table);
+  const values = Object.hasOwn(table.magnitudes, band) ? table.magnitudes[band] : null;
+  if (values === null) return false;
+  let isComplete = completeBands.get(values);
+  if (isComplete === undefined) {
+    isComplete = !values.some(Number.isNaN);
+    completeBands.set(values, isComplete);
+  }
+  const tabulated = table.massMjup;
+  return (
+    isComplete &&
+    massMjup[0] >= tabulated[0] &&
+    massMjup[massMjup.length - 1] <= tabulated[tabulated.length - 1]
+  );
 }
 
 const smaller = (a: number, b: number) => Math.min(a, b);

@@ -1,4 +1,4 @@
-import { thresholdTable } from './threshold-table';
+import { sparseThreshold, thresholdTable } from './threshold-table';
 import type { SensitivitySettings } from './types';
 
 /** How the chance of a detection rises over the cells around a companion at the beginning of cell 0. */
@@ -59,7 +59,7 @@ export function magnitudeKernel(
 }
 
 function smoothKernel(nSigma: number, cellMag: number): MagnitudeKernel {
-  const { certainAt, probability } = thresholdTable(nSigma);
+  const { certainAt, probability } = sparseThreshold(nSigma);
   const lowest = 1 - LOWEST_SIGMA / nSigma;
   const lowestMag = lowest > 0 ? Math.max(-LOWEST_MAG, 2.5 * Math.log10(lowest)) : -LOWEST_MAG;
   const from = Math.floor(lowestMag / cellMag) - 2;
@@ -68,10 +68,12 @@ function smoothKernel(nSigma: number, cellMag: number): MagnitudeKernel {
   const base = probability(-Infinity);
   const sharpened = (chance: (cells: number) => number) => (cells: number) =>
     chance(cells) - SPREAD * (chance(cells + 1) - 2 * chance(cells) + chance(cells - 1));
-  const sharpenedOnce = sharpened((cells) => probability(cells * cellMag));
-  const chanceAt = (cells: number) => (cells <= from + 1 ? base : sharpenedOnce(cells));
+  const chanceFrom = (p: (x: number) => number) => {
+    const sharpenedOnce = sharpened((cells) => p(cells * cellMag));
+    return (cells: number) => (cells <= from + 1 ? base : sharpenedOnce(cells));
+  };
   // Ages are spread over the lattice's points, a straight line between them: the same once more.
-  const sharpenedTwice = sharpened(chanceAt);
+  const sharpenedTwice = sharpened(chanceFrom(probability));
   const taps = new Float64Array(to - from + 1);
   let before = base;
   for (let k = 0; k < taps.length; k++) {
@@ -79,5 +81,11 @@ function smoothKernel(nSigma: number, cellMag: number): MagnitudeKernel {
     taps[k] = next - before;
     before = next;
   }
+  // Few taps are made without a table; single ages ask for so many places that one pays.
+  let tabulated: ((cells: number) => number) | null = null;
+  const chanceAt = (cells: number) => {
+    tabulated ??= chanceFrom(thresholdTable(nSigma).probability);
+    return tabulated(cells);
+  };
   return { from, to, taps, base, chanceAt };
 }
