@@ -25,12 +25,22 @@ export interface AgeSides {
   sides: AgeSide[];
 }
 
-/** P(age < t) of one side and its integral over ln t, at any number of places. */
-export interface SideMoments {
-  /** Added up from 0 to the side's weight, shape [place]. */
-  chance: Float64Array;
-  /** ∫ chance d ln t from the side's beginning, same shape. */
-  area: Float64Array;
+/** A side made ready to be asked at many places, see momentsAt. */
+export interface PreparedSide {
+  weight: number;
+  from: number;
+  to: number;
+  /** As in AgeSide; what follows is used where it is > 0. */
+  sigma: number;
+  /** x of the normal table's first node and its nodes per ln Myr. */
+  zero: number;
+  perStep: number;
+  /** The side's weight over what the table gains along it. */
+  scale: number;
+  /** The table's values at the side's beginning, and the area along all of the side. */
+  startChance: number;
+  startArea: number;
+  whole: number;
 }
 
 /** A normal law ends here: 6e-7 of it lies beyond both ends. */
@@ -134,64 +144,67 @@ export function sideNodes(
   return { values, weights: weights.map((w) => 0.5 * w * weight) };
 }
 
-/** Fills `out` at the first `count` places of `logAge`, [ln Myr], which may be infinite. */
-type FillMoments = (logAge: Float64Array, count: number, out: SideMoments) => void;
-
-/**
- * Chance and area of a side, ready for many places.
- *
- * @param side see AgeSide
- * Accuracy: 2e-6 of the side's weight; area is the exact integral of the lines behind chance.
- */
-export function sideMoments(side: AgeSide): FillMoments {
-  return side.sigma > 0 ? normalMoments(side) : evenMoments(side);
-}
-
-function evenMoments({ weight, from, to }: AgeSide): FillMoments {
-  const length = to - from;
-  return (logAge, count, { chance, area }) => {
-    for (let i = 0; i < count; i++) {
-      const x = Math.min(length, Math.max(0, logAge[i] - from));
-      chance[i] = (weight * x) / length;
-      area[i] = (weight * x * x) / (2 * length) + weight * Math.max(0, logAge[i] - to);
-    }
-  };
-}
-
-function normalMoments({ weight, from, to, centre, sigma }: AgeSide): FillMoments {
-  const { chance: phi, area: integral } = standardNormal();
+/** @param side see AgeSide */
+export function prepareSide({ weight, from, to, centre, sigma }: AgeSide): PreparedSide {
+  const even = { weight, from, to, sigma: 0, zero: 0, perStep: 0 };
+  if (!(sigma > 0)) return { ...even, scale: 0, startChance: 0, startArea: 0, whole: 0 };
+  const { chance, area } = standardNormal();
   const perStep = STEPS_PER_SIGMA / sigma;
-  const step = 1 / STEPS_PER_SIGMA;
   const zero = centre - LAST_SIGMA * sigma;
   const lookUp = (x: number) => {
     const place = Math.max(0, (x - zero) * perStep);
-    const k = Math.min(place | 0, phi.length - 2);
+    const k = Math.min(place | 0, chance.length - 2);
     const t = place - k;
-    const rise = phi[k + 1] - phi[k];
-    return [phi[k] + t * rise, integral[k] + step * t * (phi[k] + 0.5 * t * rise)];
+    const rise = chance[k + 1] - chance[k];
+    return [chance[k] + t * rise, area[k] + (t * (chance[k] + 0.5 * t * rise)) / STEPS_PER_SIGMA];
   };
   const [startChance, startArea] = lookUp(from);
   const [endChance, endArea] = lookUp(to);
   const scale = weight / (endChance - startChance);
   const whole = scale * (sigma * (endArea - startArea) - startChance * (to - from));
-  return (logAge, count, { chance, area }) => {
-    for (let i = 0; i < count; i++) {
-      const x = logAge[i];
-      if (x <= from) {
-        chance[i] = 0;
-        area[i] = 0;
-      } else if (x >= to) {
-        chance[i] = weight;
-        area[i] = whole + weight * (x - to);
-      } else {
-        const place = (x - zero) * perStep;
-        const k = place | 0;
-        const t = place - k;
-        const rise = phi[k + 1] - phi[k];
-        chance[i] = scale * (phi[k] + t * rise - startChance);
-        const sum = integral[k] + step * t * (phi[k] + 0.5 * t * rise);
-        area[i] = scale * (sigma * (sum - startArea) - startChance * (x - from));
-      }
-    }
-  };
+  return { weight, from, to, sigma, zero, perStep, scale, startChance, startArea, whole };
+}
+
+/**
+ * P(age < t) of one side, from 0 to the side's weight, and its integral over ln t from the side's
+ * beginning.
+ *
+ * @param side see prepareSide
+ * @param x ln t, [ln Myr], may be infinite
+ * @param out chance and area are written to its first two places
+ * Accuracy: 2e-6 of the side's weight; area is the exact integral of the lines behind chance.
+ */
+export function momentsAt(side: PreparedSide, x: number, out: Float64Array): void {
+  if (x <= side.from) {
+    out[0] = 0;
+    out[1] = 0;
+  } else if (side.sigma > 0) {
+    normalMoments(side, x, out);
+  } else {
+    evenMoments(side, x, out);
+  }
+}
+
+function evenMoments({ weight, from, to }: PreparedSide, x: number, out: Float64Array): void {
+  const length = to - from;
+  const along = Math.min(length, x - from);
+  out[0] = (weight * along) / length;
+  out[1] = (weight * along * along) / (2 * length) + weight * Math.max(0, x - to);
+}
+
+function normalMoments(side: PreparedSide, x: number, out: Float64Array): void {
+  if (x >= side.to) {
+    out[0] = side.weight;
+    out[1] = side.whole + side.weight * (x - side.to);
+    return;
+  }
+  const { chance, area } = standardNormal();
+  const { scale, startChance } = side;
+  const place = (x - side.zero) * side.perStep;
+  const k = place | 0;
+  const t = place - k;
+  const rise = chance[k + 1] - chance[k];
+  const sum = area[k] + (t * (chance[k] + 0.5 * t * rise)) / STEPS_PER_SIGMA;
+  out[0] = scale * (chance[k] + t * rise - startChance);
+  out[1] = scale * (side.sigma * (sum - side.startArea) - startChance * (x - side.from));
 }

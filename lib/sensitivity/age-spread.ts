@@ -1,4 +1,4 @@
-import { type AgeSide, sideMoments } from './age-sides';
+import { type AgeSide, momentsAt, prepareSide } from './age-sides';
 import { type CoolingPaths, UNDETECTABLE } from './cooling-paths';
 
 /** The chances of one mass's magnitudes, spread over the lattice. */
@@ -32,16 +32,15 @@ export function newAgeSpread(
   highest: number,
   weights: Float64Array,
 ): (mass: number) => SpreadAge {
-  const { begins, fromLogAge, toLogAge, cell, fromShare, toShare, longest, fades } = paths;
-  const { knots, moments } = scratchFor(longest + 1);
-  const { chance, area } = moments;
-  const fills = sides.map(sideMoments);
+  const { begins, fromLogAge, toLogAge, cell, fromShare, toShare, fades } = paths;
+  const prepared = sides.map(prepareSide);
+  // Chance and area at a place: written anew for every stretch's end.
+  const at = new Float64Array(2);
   const spread: SpreadAge = { first: 0, end: 0, total: 0, brighter: 0 };
   return (mass) => {
     weights.fill(0);
     let [first, end, total, brighter] = [highest, lowest, 0, 0];
-    for (let i = 0; i < sides.length; i++) {
-      const side = sides[i];
+    for (const side of prepared) {
       let low = firstAbove(toLogAge, begins[mass], begins[mass + 1], side.from);
       let last = begins[mass + 1];
       if (fades[mass]) {
@@ -49,49 +48,49 @@ export function newAgeSpread(
         low = Math.max(low, firstAbove(cell, begins[mass], last, lowest - 1));
         last = firstAbove(cell, low, last, highest - 1);
       }
-      let stretches = 0;
-      for (let s = low; s < last && fromLogAge[s] < side.to; s++) {
-        knots[stretches++] = fromLogAge[s];
-      }
-      if (stretches === 0) {
+      if (!(low < last && fromLogAge[low] < side.to)) {
         if (!fades[mass]) continue;
         // One place tells the share before the cells; none of the rest is among them.
-        knots[0] = low < begins[mass + 1] ? fromLogAge[low] : Infinity;
-        fills[i](knots, 1, moments);
+        momentsAt(side, low < begins[mass + 1] ? fromLogAge[low] : Infinity, at);
         total += side.weight;
-        brighter += chance[0];
+        brighter += at[0];
         continue;
       }
-      knots[stretches] = toLogAge[low + stretches - 1];
-      fills[i](knots, stretches + 1, moments);
+      let x = fromLogAge[low];
       if (fades[mass]) {
-        total += side.weight - (chance[stretches] - chance[0]);
-        brighter += chance[0];
+        momentsAt(side, Math.min(toLogAge[last - 1], side.to), at);
+        const after = at[0];
+        momentsAt(side, x, at);
+        total += side.weight - (after - at[0]);
+        brighter += at[0];
+      } else {
+        momentsAt(side, x, at);
       }
-      for (let k = 0; k < stretches; k++) {
-        const s = low + k;
+      let [chance, area] = [at[0], at[1]];
+      for (let s = low; s < last && x < side.to; s++) {
+        const [xA, chanceA, areaA] = [x, chance, area];
+        x = s + 1 < last ? fromLogAge[s + 1] : toLogAge[s];
+        momentsAt(side, x, at);
+        [chance, area] = [at[0], at[1]];
         const c = cell[s];
-        const here = chance[k + 1] - chance[k];
+        const here = chance - chanceA;
         if (c === UNDETECTABLE || !(here > 0)) continue;
         total += here;
         if (c < lowest) brighter += here;
         if (c < lowest || c >= highest) continue;
         if (c < first) first = c;
         if (c >= end) end = c + 1;
-        const at = c - lowest;
+        const place = c - lowest;
         if (!betweenPoints) {
-          weights[at] += here;
+          weights[place] += here;
           continue;
         }
         const a = fromShare[s];
         const b = toShare[s];
-        const tilt = a === b ? 0 : (b - a) / (knots[k + 1] - knots[k]);
-        const above =
-          tilt === 0
-            ? a * here
-            : b * chance[k + 1] - a * chance[k] - tilt * (area[k + 1] - area[k]);
-        weights[at] += here - above;
-        weights[at + 1] += above;
+        const tilt = a === b ? 0 : (b - a) / (x - xA);
+        const above = tilt === 0 ? a * here : b * chance - a * chanceA - tilt * (area - areaA);
+        weights[place] += here - above;
+        weights[place + 1] += above;
       }
     }
     spread.first = first;
@@ -100,19 +99,6 @@ export function newAgeSpread(
     spread.brighter = brighter;
     return spread;
   };
-}
-
-/** Written anew for every mass, so one set serves every star. */
-let scratch = newScratch(1024);
-
-function newScratch(places: number) {
-  const [knots, chance, area] = [0, 1, 2].map(() => new Float64Array(places));
-  return { knots, moments: { chance, area } };
-}
-
-function scratchFor(places: number) {
-  if (places > scratch.knots.length) scratch = newScratch(2 * places);
-  return scratch;
 }
 
 /** First index from begin to end at which increasing values are above a bound; end for none. */

@@ -157,11 +157,11 @@ function cutAt(logRatio: number, sigma: number): number {
 /** @throws RangeError for ages not positive or out of order, or half of a pair */
 export function requireAgeLaw(law: AgeLaw): void {
   const { medianMyr, lowerMyr, upperMyr, minMyr, maxMyr } = law;
-  for (const [name, value] of Object.entries({ medianMyr, lowerMyr, upperMyr, minMyr, maxMyr })) {
-    if (value !== undefined && !(value > 0 && Number.isFinite(value))) {
-      throw new RangeError(`${name} must be finite and > 0, got ${value}`);
-    }
-  }
+  requireAge('medianMyr', medianMyr);
+  requireAge('lowerMyr', lowerMyr);
+  requireAge('upperMyr', upperMyr);
+  requireAge('minMyr', minMyr);
+  requireAge('maxMyr', maxMyr);
   if ((lowerMyr === undefined) !== (upperMyr === undefined)) {
     throw new RangeError('lowerMyr and upperMyr must be given together, got one of them');
   }
@@ -172,6 +172,12 @@ export function requireAgeLaw(law: AgeLaw): void {
   const isBoundsOnly = lowerMyr === undefined && (minMyr === undefined) !== (maxMyr === undefined);
   if (isBoundsOnly) {
     throw new RangeError('minMyr and maxMyr must be given together, got one of them');
+  }
+}
+
+function requireAge(name: string, value: number | undefined): void {
+  if (value !== undefined && !(value > 0 && Number.isFinite(value))) {
+    throw new RangeError(`${name} must be finite and > 0, got ${value}`);
   }
 }
 

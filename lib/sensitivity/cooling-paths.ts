@@ -21,8 +21,6 @@ export interface CoolingPaths {
   toShare: Float64Array;
   /** Whether a mass has a magnitude at every age and never brightens, shape [mass]: 1 or 0. */
   fades: Uint8Array;
-  /** Most stretches of any mass. */
-  longest: number;
 }
 
 export const UNDETECTABLE = -1;
@@ -235,17 +233,14 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     addLine(logAge[stretches], Infinity, end, end, first);
   }
   begins[masses] = count;
-  let longest = 0;
   const fades = new Uint8Array(masses).fill(1);
   for (let i = 0; i < masses; i++) {
-    longest = Math.max(longest, begins[i + 1] - begins[i]);
     for (let s = begins[i]; s < begins[i + 1]; s++) {
       const isFainter = s === begins[i] || cell[s] >= cell[s - 1];
       if (cell[s] === UNDETECTABLE || !isFainter) fades[i] = 0;
     }
   }
   return {
-    longest,
     fades,
     cellMag,
     begins,

@@ -99,8 +99,8 @@ export function levelMap(
   const completeness = new Float64Array(masses * columns);
   for (let m = 0; m < masses; m++) {
     const from = out + m * stride;
-    const to = m * columns;
-    for (let j = firstColumn; j < columns; j++) completeness[to + j] = memory[from + j];
+    const reached = memory.subarray(from + firstColumn, from + columns);
+    completeness.set(reached, m * columns + firstColumn);
   }
   return completeness;
 }
@@ -156,8 +156,11 @@ function sumFromTop(
     const from = below + c * stride;
     // Cell c - 1 and the row under all cells stand one row lower than c.
     const to = rows + c * stride;
-    for (let j = 0; j < stride; j++) memory[to + j] += memory[from + j];
-    if (c === 0) break;
-    for (let j = 0; j < stride; j++) memory[from - stride + j] += memory[from + j];
+    const next = c === 0 ? from : from - stride;
+    for (let j = 0; j < stride; j++) {
+      const sum = memory[from + j];
+      memory[to + j] += sum;
+      memory[next + j] += sum;
+    }
   }
 }

@@ -9,7 +9,7 @@ import {
   simulateCompleteness,
   warmUpMaps,
 } from '@/lib/sensitivity';
-import { ageSides, sideMoments } from '@/lib/sensitivity/age-sides';
+import { ageSides, momentsAt, prepareSide } from '@/lib/sensitivity/age-sides';
 import { buildCurve, buildSettings, buildStar } from './build-star';
 
 // A shared machine may be slow: minutes are not expected.
@@ -145,12 +145,12 @@ describe('ageSides(age)', () => {
     const whole = sides.reduce((sum, { weight }) => sum + weight, single);
     expect(whole).toBeCloseTo(1, 14);
     for (const p of [0.02, 0.2, 0.45, 0.55, 0.8, 0.98]) {
-      const x = Float64Array.of(Math.log(quantile(p)));
+      const x = Math.log(quantile(p));
+      const at = new Float64Array(2);
       let below = points.values.every((age) => age < quantile(p)) ? single : 0;
       for (const side of sides) {
-        const out = { chance: new Float64Array(1), area: new Float64Array(1) };
-        sideMoments(side)(x, 1, out);
-        below += out.chance[0];
+        momentsAt(prepareSide(side), x, at);
+        below += at[0];
       }
       const isAtom = points.values.includes(quantile(p));
       if (!isAtom) expect(Math.abs(below - p)).toBeLessThan(4e-6);
@@ -161,10 +161,12 @@ describe('ageSides(age)', () => {
     for (const side of [...ageSides(wide).sides, ...ageSides(field).sides]) {
       const middle = 0.3 * side.from + 0.7 * side.to;
       const step = 1e-4;
-      const places = Float64Array.of(middle - step, middle, middle + step);
-      const out = { chance: new Float64Array(3), area: new Float64Array(3) };
-      sideMoments(side)(places, 3, out);
-      expect((out.area[2] - out.area[0]) / (2 * step)).toBeCloseTo(out.chance[1], 6);
+      const [before, here, after] = [middle - step, middle, middle + step].map((x) => {
+        const at = new Float64Array(2);
+        momentsAt(prepareSide(side), x, at);
+        return { chance: at[0], area: at[1] };
+      });
+      expect((after.area - before.area) / (2 * step)).toBeCloseTo(here.chance, 6);
     }
   });
 });
