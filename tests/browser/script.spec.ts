@@ -19,7 +19,9 @@ test('a script goes from files to an upper limit by the API alone', async ({ bas
   const rows: Record<string, string>[] = parse(table, { columns: true });
   const limit = rows.find(
     ({ quantity, interval, credible_level: level }) =>
-      quantity === 'companions_per_star' && interval === 'upper_limit' && Number(level) === Number(percent) / 100,
+      quantity === 'companions_per_star' &&
+      interval === 'upper_limit' &&
+      Number(level) === Number(percent) / 100,
   );
   const at = (column: string) => Number(limit?.[column]);
   expect(at('n_targets')).toBe(12);
