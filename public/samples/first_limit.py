@@ -135,6 +135,7 @@ def main(address, collaboration, token_file, folder=None):
                 "populationId": population["id"],
                 "likelihood": "mean-number",
                 "prior": {"law": "uniform", "max": 1},
+                "credibleLevel": 0.95,
             },
         },
     )
