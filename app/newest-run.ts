@@ -1,10 +1,21 @@
 import { drawnRun } from '@/app/drawn-run';
 import type { Actor } from '@/lib/access/actor';
+import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { DrawnRun, RunSummary } from '@/lib/schemas/runs';
 import { listAnalyses } from '@/lib/services/analyses';
+import { findPopulationsById } from '@/lib/services/populations';
 
 export function isFinished(run: RunSummary): boolean {
   return run.job.status === 'done' && run.limit !== null;
+}
+
+/** The newest finished run of an analysis, with the population that it was made under. */
+export async function newestRunOf(actor: Actor, { runs }: AnalysisView) {
+  const finished = runs.find(isFinished);
+  const run = finished ? await drawnRun(actor, finished.id) : null;
+  const used = run?.inputs?.population.id;
+  const populations = used ? await findPopulationsById(actor, [used]) : undefined;
+  return { run, runPopulation: (used && populations?.get(used)) || null };
 }
 
 /** The run that finished last in the whole collaboration: its maps serve previews and estimates. */

@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
 import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
+import { newestRunOf } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { settingFromQuery } from '@/components/runs/live-address';
 import { settingOfRecipe } from '@/components/runs/live-setting';
@@ -10,7 +11,6 @@ import { NotFound } from '@/lib/errors';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import { getAnalysis } from '@/lib/services/analyses';
 import { findAgesCooling } from '@/lib/services/studies';
-import { newestRunOf } from './studies/study-inputs';
 
 interface PageProps {
   params: Promise<{ collaboration: string; analysis: string }>;

@@ -1,5 +1,5 @@
 import type { Metadata } from 'next';
-import { isFinished } from '@/app/newest-run';
+import { isFinished, newestRunOf } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewForecast } from '@/components/studies/forecast/new-forecast';
 import type { Actor } from '@/lib/access/actor';
@@ -7,7 +7,6 @@ import { may } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { listAnalyses } from '@/lib/services/analyses';
 import { getStudy } from '@/lib/services/studies';
-import { newestRunOf } from '../../analyses/[analysis]/studies/study-inputs';
 
 export const metadata: Metadata = { title: 'New forecast' };
 

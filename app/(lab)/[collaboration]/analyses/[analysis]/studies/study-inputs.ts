@@ -1,14 +1,11 @@
 import { notFound } from 'next/navigation';
-import { drawnRun } from '@/app/drawn-run';
-import { isFinished } from '@/app/newest-run';
+import { newestRunOf } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import type { Actor } from '@/lib/access/actor';
 import { NotFound } from '@/lib/errors';
-import type { AnalysisView } from '@/lib/schemas/analyses';
 import { studyQuerySchema } from '@/lib/schemas/studies';
 import type { StudyKind } from '@/lib/schemas/study-settings';
 import { getAnalysis } from '@/lib/services/analyses';
-import { findPopulationsById } from '@/lib/services/populations';
 import { getStudy, listStudies } from '@/lib/services/studies';
 
 /** The questions of a kind, and the answer that is shown first: the one asked for, or the newest. */
@@ -25,15 +22,6 @@ async function firstAnswer(actor: Actor, analysisKey: string, kind: StudyKind, a
     throw reason;
   });
   return { studies, study };
-}
-
-/** The newest finished run of an analysis, with the population that it was made under. */
-export async function newestRunOf(actor: Actor, { runs }: AnalysisView) {
-  const finished = runs.find(isFinished);
-  const run = finished ? await drawnRun(actor, finished.id) : null;
-  const used = run?.inputs?.population.id;
-  const populations = used ? await findPopulationsById(actor, [used]) : undefined;
-  return { run, runPopulation: (used && populations?.get(used)) || null };
 }
 
 /** An analysis with its newest finished run, which further questions are asked of. */
