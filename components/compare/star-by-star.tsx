@@ -15,18 +15,25 @@ export interface ComparedStar {
   b: number | null;
 }
 
+/** Stars of a run, each with its detection probability. */
+function seenStars({ inputs, result }: ComparedRun) {
+  const probabilities = new Map(
+    result.starTable.map(({ starId, probability }) => [starId, probability]),
+  );
+  return inputs.stars.flatMap(({ starId, name }) => {
+    const seen = probabilities.get(starId);
+    return seen === undefined ? [] : [{ starId, name, seen }];
+  });
+}
+
 /** Stars of either, those whose detection probability differs most first. */
 export function compareStars(a: ComparedRun, b: ComparedRun): ComparedStar[] {
   const stars = new Map<string, ComparedStar>();
-  const nameOf = new Map(
-    [a, b].flatMap(({ inputs }) => inputs.stars.map(({ starId, name }) => [starId, name])),
-  );
-  for (const { starId, probability } of a.result.starTable) {
-    stars.set(starId, { starId, name: nameOf.get(starId) ?? '', a: probability, b: null });
+  for (const { starId, name, seen } of seenStars(a)) {
+    stars.set(starId, { starId, name, a: seen, b: null });
   }
-  for (const { starId, probability } of b.result.starTable) {
-    const name = nameOf.get(starId) ?? '';
-    stars.set(starId, { starId, name, a: stars.get(starId)?.a ?? null, b: probability });
+  for (const { starId, name, seen } of seenStars(b)) {
+    stars.set(starId, { starId, name, a: stars.get(starId)?.a ?? null, b: seen });
   }
   const change = (star: ComparedStar) => Math.abs((star.b ?? 0) - (star.a ?? 0));
   return [...stars.values()].sort((one, other) => change(other) - change(one));

@@ -66,7 +66,7 @@ function legendrePair(n: number, x: number): [number, number] {
  * Gauss–Hermite rule for a standard normal variable: Σ w f(z) = E f(Z), exact to degree 2n - 1.
  *
  * @param n number of nodes, integer 1 to 64
- * @returns nodes increasing, weights that sum to 1
+ * @returns nodes increasing, weights that sum to 1; worked out once, kept, not to be modified
  * @throws RangeError for n outside its domain
  * @example gaussHermite(3) // nodes -√3, 0, √3; weights 1/6, 2/3, 1/6
  */

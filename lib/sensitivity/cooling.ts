@@ -104,28 +104,24 @@ export function coolingReport(
     const { ageMinMyr, ageMaxMyr } = BUILT_IN_LAW_RANGE;
     if (least >= ageMinMyr && most <= ageMaxMyr) {
       const flagged = massesOutsideValidity(massMjup, Float64Array.of(least, most), band);
-      return {
-        massNodesOutside: 0,
-        ageNodesClamped: 0,
-        lawNodesOutsideValidity: flagged.length,
-        flaggedMassNodes: flagged,
-      };
+      return reportWithin(flagged);
     }
   }
   if (relation.kind === 'table' && coversAll(relation.table, band, massMjup)) {
     const { range } = ageRange(relation);
     const isInside = (age: number) => age >= range[0] && age <= range[1];
-    if (agesMyr.every(isInside)) {
-      return {
-        massNodesOutside: 0,
-        ageNodesClamped: 0,
-        lawNodesOutsideValidity: 0,
-        flaggedMassNodes: [],
-      };
-    }
+    if (agesMyr.every(isInside)) return reportWithin([]);
   }
   return coolNodes(relation, band, massMjup, agesMyr, policy, starName).report;
 }
+
+/** Every age lies within the relation; only the built-in law has masses outside its validity. */
+const reportWithin = (flaggedMassNodes: number[]): CoolingReport => ({
+  massNodesOutside: 0,
+  ageNodesClamped: 0,
+  lawNodesOutsideValidity: flaggedMassNodes.length,
+  flaggedMassNodes,
+});
 
 const completeBands = new WeakMap<Float64Array, boolean>();
 
