@@ -13,17 +13,22 @@ const listMissing =
  *   would bring what is not there
  */
 
-/** Debian's own Python comes first: another one on the path may not see Debian's packages. */
+const debianPython = '/usr/bin/python3';
+
+/**
+ * A Python that has the modules. Debian's own comes first: another one on the path may not see
+ * Debian's packages, so what is missing is what that one lacks, whatever the other has.
+ */
 async function findPython(/** @type {string[]} */ modules) {
-  let fewest = modules;
-  for (const command of ['/usr/bin/python3', 'python3']) {
+  let missing = modules;
+  for (const command of [debianPython, 'python3']) {
     const { code, stdout } = await run(command, ['-c', listMissing, ...modules]);
     if (code !== 0) continue;
-    const missing = stdout.trim().split(' ').filter(Boolean);
-    if (missing.length === 0) return { command, missing };
-    if (missing.length < fewest.length) fewest = missing;
+    const lacking = stdout.trim().split(' ').filter(Boolean);
+    if (lacking.length === 0) return { command, missing: [] };
+    if (command === debianPython) missing = lacking;
   }
-  return { command: null, missing: fewest };
+  return { command: null, missing };
 }
 
 /** @returns {Promise<string | null>} the command of a Python that has NumPy */
