@@ -1,17 +1,25 @@
-import { readFile, writeFile } from 'node:fs/promises';
+import { readdir, readFile, writeFile } from 'node:fs/promises';
 import path from 'node:path';
 import asc from 'assemblyscript/asc';
 import { LauncherProblem, root, runCommand } from './environment.mjs';
 
 const folder = path.join(root, 'lib/sensitivity/kernels');
-const source = 'level-kernels.ts';
+const steps = path.join(folder, 'steps');
+const source = 'steps/index.ts';
 const target = path.join(folder, 'compiled-bytes.ts');
 const LINE = 88;
 
-/** The module as the compiler writes it: no runtime, one memory that is handed in. */
+/**
+ * The module as the compiler writes it: the steps on the machine of pairs of doubles, no runtime, one
+ * memory that is handed in.
+ */
 async function compile() {
   const messages = [];
-  const files = new Map([[source, await readFile(path.join(folder, 'assembly', source), 'utf8')]]);
+  const machine = await readFile(path.join(folder, 'assembly/machine.ts'), 'utf8');
+  const files = new Map([['machine.ts', machine]]);
+  for (const name of await readdir(steps)) {
+    files.set(`steps/${name}`, await readFile(path.join(steps, name), 'utf8'));
+  }
   let bytes = null;
   const words = [source, '--outFile', 'kernels.wasm', '--runtime', 'stub', '--enable', 'simd'];
   const { error } = await asc.main([...words, '-O3', '--noAssert', '--importMemory'], {
@@ -36,7 +44,7 @@ async function compile() {
 function moduleOf(base64) {
   const lines = base64.match(new RegExp(`.{1,${LINE}}`, 'g')).map((line) => `  '${line}',`);
   return [
-    '/** Written by `npm run kernels` from assembly/level-kernels.ts: a WebAssembly module, base64. */',
+    '/** Written by `npm run kernels` from the steps: a WebAssembly module, base64. */',
     'export const COMPILED_KERNELS: string = [',
     ...lines,
     "].join('');",

@@ -25,43 +25,29 @@ export interface AgeSides {
   sides: AgeSide[];
 }
 
-/** A side made ready to be asked at many places, see momentsAt. */
-export interface PreparedSide {
-  weight: number;
-  from: number;
-  to: number;
-  /** As in AgeSide; what follows is used where it is > 0. */
-  sigma: number;
-  /** x of the normal table's first node and its nodes per ln Myr. */
-  zero: number;
-  perStep: number;
-  /** The side's weight over what the table gains along it. */
-  scale: number;
-  /** The table's values at the side's beginning, and the area along all of the side. */
-  startChance: number;
-  startArea: number;
-  whole: number;
-}
-
 /** A normal law ends here: 6e-7 of it lies beyond both ends. */
 const LAST_SIGMA = 5;
-const STEPS_PER_SIGMA = 128;
+export const NORMAL_STEPS_PER_SIGMA = 128;
 
-/** Φ on equal steps of z, with G(z) = z Φ(z) + φ(z) as the integral of the lines between. */
-let normalTable: { chance: Float64Array; area: Float64Array } | null = null;
+let kept: Float64Array | null = null;
 
-function standardNormal() {
-  if (normalTable) return normalTable;
-  const nodes = 2 * LAST_SIGMA * STEPS_PER_SIGMA + 2;
-  const chance = new Float64Array(nodes);
-  const area = new Float64Array(nodes);
-  for (let i = 0; i < nodes; i++) chance[i] = normalCumulative(i / STEPS_PER_SIGMA - LAST_SIGMA);
-  area[0] = -LAST_SIGMA * chance[0] + normalDensity(LAST_SIGMA);
-  for (let i = 1; i < nodes; i++) {
-    area[i] = area[i - 1] + (0.5 * (chance[i - 1] + chance[i])) / STEPS_PER_SIGMA;
+/**
+ * Φ on equal steps of z from -5 to beyond 5, with G(z) = z Φ(z) + φ(z) as the integral of the lines
+ * between, shape [node, 2]; NORMAL_STEPS_PER_SIGMA nodes a unit of z.
+ */
+export function normalTable(): Float64Array {
+  if (kept) return kept;
+  const nodes = 2 * LAST_SIGMA * NORMAL_STEPS_PER_SIGMA + 2;
+  const table = new Float64Array(2 * nodes);
+  for (let i = 0; i < nodes; i++) {
+    table[2 * i] = normalCumulative(i / NORMAL_STEPS_PER_SIGMA - LAST_SIGMA);
   }
-  normalTable = { chance, area };
-  return normalTable;
+  table[1] = -LAST_SIGMA * table[0] + normalDensity(LAST_SIGMA);
+  for (let i = 2; i < 2 * nodes; i += 2) {
+    table[i + 1] = table[i - 1] + (0.5 * (table[i - 2] + table[i])) / NORMAL_STEPS_PER_SIGMA;
+  }
+  kept = table;
+  return table;
 }
 
 /**
@@ -144,67 +130,46 @@ export function sideNodes(
   return { values, weights: weights.map((w) => 0.5 * w * weight) };
 }
 
-/** @param side see AgeSide */
-export function prepareSide({ weight, from, to, centre, sigma }: AgeSide): PreparedSide {
-  const even = { weight, from, to, sigma: 0, zero: 0, perStep: 0 };
-  if (!(sigma > 0)) return { ...even, scale: 0, startChance: 0, startArea: 0, whole: 0 };
-  const { chance, area } = standardNormal();
-  const perStep = STEPS_PER_SIGMA / sigma;
+/** Numbers that tell the kernels of one side. */
+export const SIDE_DOUBLES = 10;
+
+/**
+ * Writes a side for the kernels: its weight, ends and spread; then, for a normal law, ln t of the
+ * table's first node, its nodes per ln Myr, the side's weight over what the table gains along it,
+ * the table's values at the side's beginning and the area along all of the side.
+ *
+ * @param side see AgeSide
+ * @param out SIDE_DOUBLES numbers are written to it
+ */
+export function writeSide({ weight, from, to, centre, sigma }: AgeSide, out: Float64Array): void {
+  out.fill(0);
+  out[0] = weight;
+  out[1] = from;
+  out[2] = to;
+  out[3] = sigma;
+  if (!(sigma > 0)) {
+    out[3] = 0;
+    return;
+  }
+  const table = normalTable();
+  const perStep = NORMAL_STEPS_PER_SIGMA / sigma;
   const zero = centre - LAST_SIGMA * sigma;
-  const lookUp = (x: number) => {
+  const lookUp = (x: number): [number, number] => {
     const place = Math.max(0, (x - zero) * perStep);
-    const k = Math.min(place | 0, chance.length - 2);
+    const k = Math.min(place | 0, table.length / 2 - 2);
     const t = place - k;
-    const rise = chance[k + 1] - chance[k];
-    return [chance[k] + t * rise, area[k] + (t * (chance[k] + 0.5 * t * rise)) / STEPS_PER_SIGMA];
+    const low = table[2 * k];
+    const rise = table[2 * k + 2] - low;
+    const area = table[2 * k + 1] + (t * (low + 0.5 * t * rise)) / NORMAL_STEPS_PER_SIGMA;
+    return [low + t * rise, area];
   };
   const [startChance, startArea] = lookUp(from);
   const [endChance, endArea] = lookUp(to);
   const scale = weight / (endChance - startChance);
-  const whole = scale * (sigma * (endArea - startArea) - startChance * (to - from));
-  return { weight, from, to, sigma, zero, perStep, scale, startChance, startArea, whole };
-}
-
-/**
- * P(age < t) of one side, from 0 to the side's weight, and its integral over ln t from the side's
- * beginning.
- *
- * @param side see prepareSide
- * @param x ln t, [ln Myr], may be infinite
- * @param out chance and area are written to its first two places
- * Accuracy: 2e-6 of the side's weight; area is the exact integral of the lines behind chance.
- */
-export function momentsAt(side: PreparedSide, x: number, out: Float64Array): void {
-  if (x <= side.from) {
-    out[0] = 0;
-    out[1] = 0;
-  } else if (side.sigma > 0) {
-    normalMoments(side, x, out);
-  } else {
-    evenMoments(side, x, out);
-  }
-}
-
-function evenMoments({ weight, from, to }: PreparedSide, x: number, out: Float64Array): void {
-  const length = to - from;
-  const along = Math.min(length, x - from);
-  out[0] = (weight * along) / length;
-  out[1] = (weight * along * along) / (2 * length) + weight * Math.max(0, x - to);
-}
-
-function normalMoments(side: PreparedSide, x: number, out: Float64Array): void {
-  if (x >= side.to) {
-    out[0] = side.weight;
-    out[1] = side.whole + side.weight * (x - side.to);
-    return;
-  }
-  const { chance, area } = standardNormal();
-  const { scale, startChance } = side;
-  const place = (x - side.zero) * side.perStep;
-  const k = place | 0;
-  const t = place - k;
-  const rise = chance[k + 1] - chance[k];
-  const sum = area[k] + (t * (chance[k] + 0.5 * t * rise)) / STEPS_PER_SIGMA;
-  out[0] = scale * (chance[k] + t * rise - startChance);
-  out[1] = scale * (side.sigma * (sum - side.startArea) - startChance * (x - side.from));
+  out[4] = zero;
+  out[5] = perStep;
+  out[6] = scale;
+  out[7] = startChance;
+  out[8] = startArea;
+  out[9] = scale * (sigma * (endArea - startArea) - startChance * (to - from));
 }

@@ -21,7 +21,7 @@ import type {
 import { removeUnstableNodes } from './unstable-zone';
 
 /** Changes whenever the same inputs would give other numbers, so that stored maps are not reused. */
-export const ENGINE_VERSION: string = '3';
+export const ENGINE_VERSION: string = '4';
 
 /**
  * Completeness of one star, P(detected | companion of mass m and semi-major axis a), without random
@@ -60,11 +60,7 @@ export function computeCompletenessMap(
   const logAxis = logOf(grid.semiMajorAxisAu);
   const completeness = isByLevels
     ? integrateByLevels(star, prepared, cooling, grid.massMjup, logAxis, settings)
-    : direct(prepared, grid.massMjup.length, logAxis, settings);
-  for (let i = 0; i < completeness.length; i++) {
-    if (completeness[i] <= 0) completeness[i] = 0;
-    else if (completeness[i] > 1) completeness[i] = 1;
-  }
+    : cutToChances(direct(prepared, grid.massMjup.length, logAxis, settings));
   const removed = removeUnstableNodes(completeness, grid, star, settings);
   return {
     map: {
@@ -95,6 +91,14 @@ function direct(
 ): Float64Array {
   const rows = exactRows(eccentricity, logAxis);
   return directIntegral(star, rows, masses, logAxis.length, threshold);
+}
+
+function cutToChances(values: Float64Array): Float64Array {
+  for (let i = 0; i < values.length; i++) {
+    if (values[i] <= 0) values[i] = 0;
+    else if (values[i] > 1) values[i] = 1;
+  }
+  return values;
 }
 
 const NO_SINGLE_AGES: SingleAges = {
@@ -131,13 +135,11 @@ function integrateByLevels(
           settings,
         )
       : null;
-  if (ofSingle && age.sides.length === 0) return ofSingle;
+  if (ofSingle && age.sides.length === 0) return cutToChances(ofSingle);
   const paths = coolingPaths(cooling, band, massMjup, massOutsideTable, age.cellMag);
   const inputs = { paths, sides: age.sides, single, threshold, nSigma };
   if (isHard) inputs.single = NO_SINGLE_AGES;
-  const completeness = levelMap(prepared, inputs, eccentricity, logAxis);
-  if (ofSingle) for (let i = 0; i < ofSingle.length; i++) completeness[i] += ofSingle[i];
-  return completeness;
+  return levelMap(prepared, inputs, eccentricity, logAxis, ofSingle);
 }
 
 function singleAges(

@@ -7,23 +7,23 @@ import type { CoolingRelation, CoolingTable, SensitivitySettings } from './types
  * stretch the magnitude is a straight line in ln t within one cell. Independent of any star's age.
  */
 export interface CoolingPaths {
-  /** Width of the lattice's cells, [mag]; cell c begins at (c - CELLS_BELOW_ZERO) × cellMag. */
+  /** Width of the lattice's cells, [mag]; cell c begins at (c - cellOfZero) × cellMag. */
   cellMag: number;
-  /** Stretches of mass i are begins[i] … begins[i + 1] - 1. */
-  begins: Int32Array;
-  /** ln t at the beginning and end of each stretch, [ln Myr]; the outermost reach to infinity. */
-  fromLogAge: Float64Array;
-  toLogAge: Float64Array;
-  /** Cell of each stretch; UNDETECTABLE where the relation has no magnitude. */
-  cell: Int32Array;
-  /** Place within the cell at both ends, 0 to 1. */
-  fromShare: Float64Array;
-  toShare: Float64Array;
+  masses: number;
+  /**
+   * Shape [stretch, 4]: ln t where it begins, [ln Myr]; its cell, UNDETECTABLE where the relation has
+   * no magnitude; its places within the cell at both ends, 0 to 1. A stretch ends where the next
+   * begins; the outermost reach to infinity, and a record with nothing else tells each mass's end.
+   */
+  stretches: Float64Array;
+  /** Records of mass i are begins[i] … begins[i + 1] - 1. */
+  begins: Float64Array;
   /** Whether a mass has a magnitude at every age and never brightens, shape [mass]: 1 or 0. */
-  fades: Uint8Array;
+  fades: Float64Array;
 }
 
-export const UNDETECTABLE = -1;
+const UNDETECTABLE = -1;
+const RECORD = 4;
 /** Magnitudes from -20 to 60 have cells of their own; what lies beyond counts at the ends. */
 const BRIGHTEST_MAG = -20;
 const FAINTEST_MAG = 60;
@@ -151,106 +151,94 @@ function tableLines(
   return { logAge: table.ageMyr.map(Math.log), fromMag, toMag };
 }
 
-const newDoubles = (length: number): Float64Array => new Float64Array(length);
+/** Lines that bend by less than this share of a cell are one. */
+const STRAIGHT_SHARE = 0.02;
 
 function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): CoolingPaths {
-  const stretches = logAge.length - 1;
-  const masses = fromMag.length / stretches;
-  const begins = new Int32Array(masses + 1);
-  let count = 0;
-  let [fromLogAge, toLogAge, fromShare, toShare] = [0, 1, 2, 3].map(() => newDoubles(4096));
-  let cell = new Int32Array(4096);
-  const grow = () => {
-    const longer = (values: Float64Array) => {
-      const copy = newDoubles(2 * values.length);
-      copy.set(values);
-      return copy;
-    };
-    [fromLogAge, toLogAge] = [longer(fromLogAge), longer(toLogAge)];
-    [fromShare, toShare] = [longer(fromShare), longer(toShare)];
-    const cells = new Int32Array(2 * cell.length);
-    cells.set(cell);
-    cell = cells;
-  };
+  const lines = logAge.length - 1;
+  const masses = fromMag.length / lines;
+  const begins = new Float64Array(masses + 1);
+  let records = new Float64Array(1 << 14);
+  // Where the next record goes, and the first of the mass.
+  let [end, first] = [0, 0];
   const zero = cellOfZero(cellMag);
   const last = Math.round((FAINTEST_MAG - BRIGHTEST_MAG) / cellMag) - 1;
   const placeOf = (mag: number) => Math.min(last + 0.5, Math.max(0, mag / cellMag + zero));
 
-  /** Follows a line through the cells; one that stays in the last line's cell goes on with it. */
-  const addLine = (xA: number, xB: number, magA: number, magB: number, first: number) => {
+  const addRecord = (x: number, cell: number, a: number, b: number) => {
+    if (end === records.length) {
+      const longer = new Float64Array(2 * end);
+      longer.set(records);
+      records = longer;
+    }
+    records[end] = x;
+    records[end + 1] = cell;
+    records[end + 2] = a;
+    records[end + 3] = b;
+    end += RECORD;
+  };
+  /** Whether a stretch goes on in the same cell, on one line with the last. */
+  const goesOn = (xA: number, xB: number, cell: number, a: number, b: number) => {
+    const before = end - RECORD;
+    if (before < first || records[before + 1] !== cell) return false;
+    const from = records[before];
+    if (!Number.isFinite(from) || !Number.isFinite(xB)) return false;
+    if (cell === UNDETECTABLE) return true;
+    if (Math.abs(records[before + 3] - a) > 1e-12) return false;
+    const share = records[before + 2];
+    const expected = share + ((xA - from) / (xB - from)) * (b - share);
+    return Math.abs(expected - a) < STRAIGHT_SHARE;
+  };
+  const addStretch = (xA: number, xB: number, cell: number, a: number, b: number) => {
+    if (goesOn(xA, xB, cell, a, b)) records[end - 1] = b;
+    else addRecord(xA, cell, a, b);
+  };
+  /** Follows a line through the cells. */
+  const addLine = (xA: number, xB: number, magA: number, magB: number) => {
     if (Number.isNaN(magA) || Number.isNaN(magB)) {
-      addStretch(xA, xB, UNDETECTABLE, 0, 0, first);
+      addStretch(xA, xB, UNDETECTABLE, 0, 0);
       return;
     }
     const [a, b] = [placeOf(magA), placeOf(magB)];
     const perPlace = a === b ? 0 : (xB - xA) / (b - a);
-    const end = Math.floor(b);
+    const lastCell = Math.floor(b);
     let [x, place, c] = [xA, a, Math.floor(a)];
-    while (c !== end) {
+    while (c !== lastCell) {
       const edge = b > a ? c + 1 : c;
       const cut = xA + (edge - a) * perPlace;
-      if (cut > x) addStretch(x, cut, c, place - c, edge - c, first);
+      if (cut > x) addStretch(x, cut, c, place - c, edge - c);
       [x, place] = [Math.max(x, cut), edge];
       c += b > a ? 1 : -1;
     }
-    if (xB > x) addStretch(x, xB, c, place - c, b - c, first);
-  };
-  const addStretch = (xA: number, xB: number, c: number, a: number, b: number, first: number) => {
-    const before = count - 1;
-    const goesOn = before >= first && cell[before] === c && toLogAge[before] === xA;
-    const isBounded = Number.isFinite(xA) && Number.isFinite(xB);
-    if (goesOn && isBounded && Number.isFinite(fromLogAge[before]) && isOneLine(before, xB, a, b)) {
-      toLogAge[before] = xB;
-      toShare[before] = b;
-      return;
-    }
-    if (count === cell.length) grow();
-    fromLogAge[count] = xA;
-    toLogAge[count] = xB;
-    cell[count] = c;
-    fromShare[count] = a;
-    toShare[count] = b;
-    count++;
-  };
-  const isOneLine = (before: number, xB: number, a: number, b: number) => {
-    if (cell[before] === UNDETECTABLE) return true;
-    if (Math.abs(toShare[before] - a) > 1e-12) return false;
-    const xA = toLogAge[before];
-    const rise = (xA - fromLogAge[before]) / (xB - fromLogAge[before]);
-    const expected = fromShare[before] + rise * (b - fromShare[before]);
-    return Math.abs(expected - a) < STRAIGHT_SHARE;
+    if (xB > x) addStretch(x, xB, c, place - c, b - c);
   };
 
   for (let i = 0; i < masses; i++) {
-    const first = count;
-    begins[i] = first;
-    const row = i * stretches;
-    addLine(-Infinity, logAge[0], fromMag[row], fromMag[row], first);
-    for (let k = 0; k < stretches; k++) {
-      addLine(logAge[k], logAge[k + 1], fromMag[row + k], toMag[row + k], first);
+    first = end;
+    begins[i] = end / RECORD;
+    const row = i * lines;
+    addLine(-Infinity, logAge[0], fromMag[row], fromMag[row]);
+    for (let k = 0; k < lines; k++) {
+      addLine(logAge[k], logAge[k + 1], fromMag[row + k], toMag[row + k]);
     }
-    const end = toMag[row + stretches - 1];
-    addLine(logAge[stretches], Infinity, end, end, first);
+    const oldest = toMag[row + lines - 1];
+    addLine(logAge[lines], Infinity, oldest, oldest);
+    addRecord(Infinity, 0, 0, 0);
   }
-  begins[masses] = count;
-  const fades = new Uint8Array(masses).fill(1);
-  for (let i = 0; i < masses; i++) {
-    for (let s = begins[i]; s < begins[i + 1]; s++) {
-      const isFainter = s === begins[i] || cell[s] >= cell[s - 1];
-      if (cell[s] === UNDETECTABLE || !isFainter) fades[i] = 0;
-    }
-  }
-  return {
-    fades,
-    cellMag,
-    begins,
-    fromLogAge: fromLogAge.slice(0, count),
-    toLogAge: toLogAge.slice(0, count),
-    cell: cell.slice(0, count),
-    fromShare: fromShare.slice(0, count),
-    toShare: toShare.slice(0, count),
-  };
+  begins[masses] = end / RECORD;
+  const stretches = records.slice(0, end);
+  return { cellMag, masses, stretches, begins, fades: fadingMasses(stretches, begins) };
 }
 
-/** Lines that bend by less than this share of a cell are one. */
-const STRAIGHT_SHARE = 0.02;
+function fadingMasses(stretches: Float64Array, begins: Float64Array): Float64Array {
+  const fades = new Float64Array(begins.length - 1).fill(1);
+  for (let i = 0; i < fades.length; i++) {
+    const last = begins[i + 1] - 2;
+    for (let s = begins[i]; s <= last; s++) {
+      const cell = stretches[RECORD * s + 1];
+      const isBrighter = s < last && stretches[RECORD * (s + 1) + 1] < cell;
+      if (cell === UNDETECTABLE || isBrighter) fades[i] = 0;
+    }
+  }
+  return fades;
+}

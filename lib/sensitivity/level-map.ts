@@ -1,41 +1,42 @@
+import { cellRange } from './cell-range';
+import { cellOfZero } from './cooling-paths';
 import { compiledKernels } from './kernels/compiled';
 import type { Kernels } from './kernels/kernels';
 import { plainKernels } from './kernels/plain';
-import { addLevelMeans, type CellRange, cellRange } from './level-means';
-import { fillMagnitudeWeights, type WeightInputs, weightScratch } from './magnitude-weights';
+import { newShelf, type Shelved } from './kernels/shelf';
+import {
+  fillMagnitudeWeights,
+  type WeightInputs,
+  weightScratch,
+  weightTables,
+} from './magnitude-weights';
 import { largestSeparation } from './orbits';
-import { type AddRow, lookedUpRows, phaseRows } from './row-adder';
 import { evenStep, type SeparationPhases, separationPhases } from './separation-phases';
-import { tabulatedRows } from './separation-rows';
-import type { PreparedStar } from './star-model';
+import { joinedTable, separationTable } from './separation-table';
+import type { PreparedCurve, PreparedStar } from './star-model';
 import type { EccentricityLaw } from './types';
 
 /** Columns are worked on in blocks of so many. */
 const BLOCK = 8;
+/** Doubles of a distance node: its weight, ln d and μ. */
+const DISTANCE_DOUBLES = 3;
+/** Kinds of rows that are added to, see addLevelMeans. */
+const ROW_KINDS = 3;
 
-let chosen: Kernels | null = null;
+interface Workplace {
+  kernels: Kernels;
+  shelve: (tables: readonly Float64Array[]) => Shelved;
+}
+
+let workplace: Workplace | null = null;
+
 /** Chosen with the first map: whoever computes none compiles nothing. */
-function kernelsHere(): Kernels {
-  chosen ??= compiledKernels() ?? plainKernels();
-  return chosen;
+function workplaceHere(): Workplace {
+  if (workplace) return workplace;
+  const kernels = compiledKernels() ?? plainKernels;
+  workplace = { kernels, shelve: newShelf(kernels) };
+  return workplace;
 }
-
-/** The table that lies at the beginning of the kernels' memory. */
-interface Workspace {
-  law: string;
-  firstLogAxis: number;
-  axisStep: number;
-  stride: number;
-  phases: SeparationPhases | null;
-}
-
-const workspace: Workspace = {
-  law: '',
-  firstLogAxis: 0,
-  axisStep: 0,
-  stride: 0,
-  phases: null,
-};
 
 /**
  * Completeness of one curve as a product, C = W · H: weights from age alone, rows from the curve.
@@ -44,86 +45,143 @@ const workspace: Workspace = {
  * @param inputs of the weights
  * @param law eccentricity law
  * @param logAxis ln a of the grid, [ln au], not modified
- * @returns shape [mass, semiMajorAxis], row-major, not yet cut to 0…1
+ * @param besides what is seen besides, added before the map is cut; null for nothing
+ * @returns shape [mass, semiMajorAxis], row-major, 0 to 1
  */
 export function levelMap(
   star: PreparedStar,
   inputs: WeightInputs,
   law: EccentricityLaw,
   logAxis: Float64Array,
+  besides: Float64Array | null,
 ): Float64Array {
-  const kernels = kernelsHere();
+  const { kernels, shelve } = workplaceHere();
   const columns = logAxis.length;
-  const { cellMag, begins } = inputs.paths;
-  const masses = begins.length - 1;
+  const { cellMag, masses } = inputs.paths;
   const stride = BLOCK * Math.ceil(columns / BLOCK);
   const [curve] = star.curves;
   // A cell more at each end: places are rounded in two ways.
   const range = cellRange(star, curve, cellMag);
   range.first--;
   range.count += 2;
-  const phases = phasesFor(law, logAxis, stride);
-  // What is kept for the next star lies in front, whether this one uses it or not.
-  const rows = workspace.phases?.planes.length ?? 0;
-  // Row 0 is H below every cell; the cells follow, and what the cells below each gain.
-  const below = rows + stride * (range.count + 1);
-  const spare = below + stride * range.count;
-  const scratch = spare + stride;
-  const factors = scratch + weightScratch(inputs, range.count);
-  const out = factors + masses * (range.count + 1);
+  const lawRows = rowsOfLaw(law, logAxis, stride);
+  const shelved = shelve([...lawRows.tables, ...weightTables(inputs)]);
+  const places = shelved.places;
+  const firstColumn = lawRows.phases ? firstReached(star, law, logAxis) : 0;
+  const width = range.count + 1;
+  const slotCount = ROW_KINDS * range.count;
+  const slots = shelved.end;
+  const star0 = slots + slotCount + (slotCount & 1);
+  const curveDoubles = 3 * curve.limitMag.length + DISTANCE_DOUBLES * star.modulus.length;
+  const freeRows = star0 + curveDoubles + (curveDoubles & 1);
+  const rows = freeRows + stride * slotCount;
+  const spare = rows + stride * width;
+  const factors = spare + 2 * stride;
+  const bands = factors + masses * width;
+  const scratch = bands + 2 * masses;
+  const scratchDoubles = weightScratch(inputs, range.count);
+  const out = scratch + scratchDoubles + ((scratch + scratchDoubles) & 1);
   const memory = kernels.reserve(out + (masses + 1) * stride);
-  const firstColumn = phases ? firstReached(star, law, logAxis) : 0;
-  const places = { rows: rows + stride, stride, firstColumn, spare: 2 * range.count };
-  memory.fill(0, rows, scratch);
-  const add: AddRow = phases
-    ? phaseRows(kernels, phases, 0, places)
-    : lookedUpRows(kernels, tabulatedRows(law, logAxis), columns, places);
-  addLevelMeans(star, curve, cellMag, range, add);
-  sumFromTop(memory, rows, below, range, stride);
-  const bands = fillMagnitudeWeights(inputs, range, kernels, factors, scratch);
-  for (let m = 0; m < masses; m += 2) {
-    const next = Math.min(m + 1, masses - 1);
-    const width = range.count + 1;
-    kernels.multiplyPair(
-      out + m * stride + firstColumn,
-      out + (m + 1) * stride + firstColumn,
-      factors + m * width,
-      factors + next * width,
-      rows + firstColumn,
-      stride,
-      Math.min(bands.first[m], bands.first[next]),
-      Math.max(bands.end[m], bands.end[next]),
-      stride - firstColumn,
-    );
-  }
-  const completeness = new Float64Array(masses * columns);
-  for (let m = 0; m < masses; m++) {
-    const from = out + m * stride;
-    const reached = memory.subarray(from + firstColumn, from + columns);
-    completeness.set(reached, m * columns + firstColumn);
-  }
-  return completeness;
+  const distances = placeStar(memory, star0, star, curve);
+  if (lawRows.phases) setPhases(kernels, lawRows.phases, places[0]);
+  else setTable(kernels, law, places[0], places[1], columns);
+  kernels.openRows(slots, slotCount, freeRows, stride, firstColumn);
+  kernels.addLevelMeans(
+    star0,
+    curve.limitMag.length,
+    distances,
+    star.modulus.length,
+    1 / cellMag,
+    cellOfZero(cellMag) - range.first,
+    range.count,
+  );
+  kernels.foldRows(rows, spare, stride, stride - firstColumn, range.count);
+  const tables = places.slice(lawRows.tables.length);
+  fillMagnitudeWeights(inputs, tables, range, kernels, factors, bands, scratch);
+  kernels.multiplyRows(out, masses, columns, factors, width, bands, rows, stride, firstColumn);
+  const size = masses * columns;
+  if (besides) for (let i = 0; i < size; i++) memory[out + i] += besides[i];
+  kernels.clipMap(out, size);
+  return memory.slice(out, out + size);
 }
 
-/** The phases of an even axis, at the beginning of the memory; null for an axis that is not. */
-function phasesFor(
-  law: EccentricityLaw,
-  logAxis: Float64Array,
-  stride: number,
-): SeparationPhases | null {
-  const axisStep = evenStep(logAxis);
-  if (axisStep === null) return null;
+/** Writes curve and distances, and tells where the distances begin. */
+function placeStar(
+  memory: Float64Array,
+  at: number,
+  star: PreparedStar,
+  { logSeparation, limitMag, coverage }: PreparedCurve,
+): number {
+  const points = limitMag.length;
+  memory.set(logSeparation, at);
+  memory.set(limitMag, at + points);
+  memory.set(coverage, at + 2 * points);
+  const distances = at + 3 * points;
+  for (let l = 0; l < star.modulus.length; l++) {
+    const node = distances + DISTANCE_DOUBLES * l;
+    memory[node] = star.distances.weights[l];
+    memory[node + 1] = star.logDistance[l];
+    memory[node + 2] = star.modulus[l];
+  }
+  return distances;
+}
+
+/** What rows are taken from: the phases of an even axis, or the law's table and the axis. */
+interface LawRows {
+  phases: SeparationPhases | null;
+  tables: Float64Array[];
+}
+
+interface KeptRows extends LawRows {
+  law: string;
+  logAxis: Float64Array;
+}
+
+let lastRows: KeptRows | null = null;
+
+function rowsOfLaw(law: EccentricityLaw, logAxis: Float64Array, stride: number): LawRows {
   const key = lawKey(law);
-  const isKnown =
-    workspace.law === key &&
-    workspace.firstLogAxis === logAxis[0] &&
-    workspace.axisStep === axisStep &&
-    workspace.stride === stride;
-  if (isKnown) return workspace.phases;
-  const phases = separationPhases(law, logAxis[0], axisStep, stride);
-  kernelsHere().reserve(phases.planes.length).set(phases.planes);
-  Object.assign(workspace, { law: key, firstLogAxis: logAxis[0], axisStep, stride, phases });
-  return phases;
+  if (lastRows?.law === key && isSame(lastRows.logAxis, logAxis)) return lastRows;
+  const axisStep = evenStep(logAxis);
+  const axis = logAxis.slice();
+  if (axisStep === null) {
+    lastRows = { law: key, logAxis: axis, phases: null, tables: [joinedTable(law), axis] };
+  } else {
+    const phases = separationPhases(law, logAxis[0], axisStep, stride);
+    lastRows = { law: key, logAxis: axis, phases, tables: [phases.planes] };
+  }
+  return lastRows;
+}
+
+function isSame(a: Float64Array, b: Float64Array): boolean {
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
+  return true;
+}
+
+function setPhases(kernels: Kernels, phases: SeparationPhases, planes: number): void {
+  kernels.setPhases(
+    planes,
+    phases.planeSize,
+    phases.width,
+    phases.phases,
+    phases.beyond,
+    phases.step,
+    phases.top,
+    phases.firstLogAxis,
+    phases.axisStep,
+  );
+}
+
+function setTable(
+  kernels: Kernels,
+  law: EccentricityLaw,
+  table: number,
+  axis: number,
+  columns: number,
+): void {
+  const { start, step, cumulative } = separationTable(law);
+  kernels.setTable(table, cumulative.length - 1, start, step, axis, columns);
 }
 
 /** Names a law with its numbers: this is asked for every star. */
@@ -142,25 +200,4 @@ function firstReached(star: PreparedStar, law: EccentricityLaw, logAxis: Float64
   let j = 0;
   while (j < logAxis.length && logAxis[j] < wanted) j++;
   return Math.min(logAxis.length - 1, j) & -BLOCK;
-}
-
-/** Adds to each cell what lies at fainter limits: sums from the faintest cell down. */
-function sumFromTop(
-  memory: Float64Array,
-  rows: number,
-  below: number,
-  range: CellRange,
-  stride: number,
-): void {
-  for (let c = range.count - 1; c >= 0; c--) {
-    const from = below + c * stride;
-    // Cell c - 1 and the row under all cells stand one row lower than c.
-    const to = rows + c * stride;
-    const next = c === 0 ? from : from - stride;
-    for (let j = 0; j < stride; j++) {
-      const sum = memory[from + j];
-      memory[to + j] += sum;
-      memory[next + j] += sum;
-    }
-  }
 }

@@ -1,4 +1,4 @@
-import { sparseThreshold, thresholdTable } from './threshold-table';
+import { sparseThreshold } from './threshold-table';
 import type { SensitivitySettings } from './types';
 
 /** How the chance of a detection rises over the cells around a companion at the beginning of cell 0. */
@@ -6,12 +6,12 @@ export interface MagnitudeKernel {
   /** First and last cell with a rise. */
   from: number;
   to: number;
-  /** Rises, shape [to - from + 1]. */
+  /** Rises, an even number of them and a 0 last where they are odd; taps has 0s around them. */
+  count: number;
+  /** A 0, the rises, and two 0s: as the kernels read them. */
   taps: Float64Array;
   /** Chance without a signal. */
   base: number;
-  /** Chance at a limit so many cells fainter than the companion, sharpened once. */
-  chanceAt(cells: number): number;
 }
 
 /** Beyond this a smooth threshold's chance no longer changes by more than 4e-6. */
@@ -21,17 +21,14 @@ const LOWEST_MAG = 4;
  * A row is the mean of H over its cell and Π a straight line there: together they spread a
  * detection by a twelfth of a squared cell, which a second difference takes back.
  */
-const SPREAD = 1 / 12;
+export const SPREAD = 1 / 12;
 
 /** Under the hard rule the chance of a companion in a cell is the cell's rise. */
 const HARD: MagnitudeKernel = {
   from: -1,
   to: 1,
-  taps: Float64Array.of(-SPREAD, 1 + 2 * SPREAD, -SPREAD),
+  ...paddedTaps(Float64Array.of(-SPREAD, 1 + 2 * SPREAD, -SPREAD)),
   base: 0,
-  chanceAt: () => {
-    throw new RangeError('threshold must be smooth for a single age, got hard');
-  },
 };
 
 const kernels = new Map<string, MagnitudeKernel>();
@@ -81,11 +78,12 @@ function smoothKernel(nSigma: number, cellMag: number): MagnitudeKernel {
     taps[k] = next - before;
     before = next;
   }
-  // Few taps are made without a table; single ages ask for so many places that one pays.
-  let tabulated: ((cells: number) => number) | null = null;
-  const chanceAt = (cells: number) => {
-    tabulated ??= chanceFrom(thresholdTable(nSigma).probability);
-    return tabulated(cells);
-  };
-  return { from, to, taps, base, chanceAt };
+  return { from, to, ...paddedTaps(taps), base };
+}
+
+function paddedTaps(rises: Float64Array): { count: number; taps: Float64Array } {
+  const count = rises.length + (rises.length & 1);
+  const taps = new Float64Array(count + 3);
+  taps.set(rises, 1);
+  return { count, taps };
 }

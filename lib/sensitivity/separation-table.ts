@@ -44,6 +44,22 @@ export function separationTable(law: EccentricityLaw): SeparationTable {
   return table;
 }
 
+const joined = new WeakMap<SeparationTable, Float64Array>();
+
+/** The three arrays of a law's table one after another, as the kernels read them. */
+export function joinedTable(law: EccentricityLaw): Float64Array {
+  const table = separationTable(law);
+  const known = joined.get(table);
+  if (known) return known;
+  const { cumulative, first, second } = table;
+  const values = new Float64Array(3 * cumulative.length);
+  values.set(cumulative);
+  values.set(first, cumulative.length);
+  values.set(second, 2 * cumulative.length);
+  joined.set(table, values);
+  return values;
+}
+
 function buildTable(law: EccentricityLaw): SeparationTable {
   const step = (Math.log(largestSeparation(law)) - START) / INTERVALS;
   const cumulative = new Float64Array(INTERVALS + 1);

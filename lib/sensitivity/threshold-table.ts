@@ -7,8 +7,14 @@ export interface ThresholdTable {
   probability(x: number): number;
 }
 
+/** The same with its numbers: node i is p at START_MAG + i · step, shape [steps + 1]. */
+export interface TabulatedThreshold extends ThresholdTable {
+  values: Float64Array;
+  perStep: number;
+}
+
 /** p is Φ(-n) to nine digits below it. */
-const START_MAG = -15;
+export const START_MAG = -15;
 /** z at which Φ is 1 to the last bit. */
 const CERTAIN_SIGMAS = 8;
 const STEP_TIMES_SIGMA = 0.01;
@@ -16,7 +22,7 @@ const WIDEST_STEP_MAG = 0.002;
 /** Beyond n = 100 the threshold is narrower than any curve is known. */
 const NARROWEST_STEP_MAG = 1e-4;
 
-const tables = new Map<number, ThresholdTable>();
+const tables = new Map<number, TabulatedThreshold>();
 
 /** The table's nodes: number of steps and their width. */
 function tableSteps(nSigma: number): { certainAt: number; steps: number; step: number } {
@@ -50,7 +56,7 @@ function betweenNodes(
  * @param nSigma n, > 0
  * Accuracy: 3e-6 in p.
  */
-export function thresholdTable(nSigma: number): ThresholdTable {
+export function thresholdTable(nSigma: number): TabulatedThreshold {
   const known = tables.get(nSigma);
   if (known) return known;
   const { certainAt, steps, step } = tableSteps(nSigma);
@@ -58,7 +64,12 @@ export function thresholdTable(nSigma: number): ThresholdTable {
   for (let i = 0; i <= steps; i++) {
     p[i] = detectionProbability(START_MAG + i * step, 0, nSigma, 'smooth');
   }
-  const table: ThresholdTable = { certainAt, probability: betweenNodes(steps, step, (i) => p[i]) };
+  const table = {
+    certainAt,
+    probability: betweenNodes(steps, step, (i) => p[i]),
+    values: p,
+    perStep: 1 / step,
+  };
   if (tables.size >= 16) tables.clear();
   tables.set(nSigma, table);
   return table;

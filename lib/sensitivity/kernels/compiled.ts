@@ -1,5 +1,5 @@
 import { COMPILED_KERNELS } from './compiled-bytes';
-import type { Kernels } from './kernels';
+import type { Kernels, Steps } from './kernels';
 
 /** The part of WebAssembly that is used: this room knows no platform. */
 interface WasmMemory {
@@ -11,10 +11,7 @@ interface Wasm {
   validate(bytes: Uint8Array): boolean;
   Memory: new (size: { initial: number }) => WasmMemory;
   Module: new (bytes: Uint8Array) => object;
-  Instance: new (
-    module: object,
-    imports: { env: { memory: WasmMemory } },
-  ) => { exports: Pick<Kernels, 'addRow' | 'addLongRow' | 'convolve' | 'multiplyPair'> };
+  Instance: new (module: object, imports: { env: { memory: WasmMemory } }) => { exports: Steps };
 }
 
 const PAGE_DOUBLES = 8192;
@@ -56,10 +53,10 @@ export function compiledKernels(): Kernels | null {
   const module = wasm?.validate(bytes) ? compile(wasm, bytes) : null;
   if (!wasm || module === null) return null;
   const memory = new wasm.Memory({ initial: FIRST_PAGES });
-  const instance = new wasm.Instance(module, { env: { memory } });
-  const { addRow, addLongRow, convolve, multiplyPair } = instance.exports;
+  const { exports } = new wasm.Instance(module, { env: { memory } });
   let view = new Float64Array(memory.buffer);
   return {
+    ...exports,
     name: 'compiled',
     reserve: (doubles) => {
       if (doubles > view.length) {
@@ -68,23 +65,5 @@ export function compiledKernels(): Kernels | null {
       }
       return view;
     },
-    addRow: (target, source, slice, plane, perDrop, perF, perG, count) =>
-      addRow(8 * target, 8 * source, 8 * slice, 8 * plane, perDrop, perF, perG, count),
-    addLongRow: (target, source, slice, plane, perDrop, perF, perG, perG2, count) =>
-      addLongRow(8 * target, 8 * source, 8 * slice, 8 * plane, perDrop, perF, perG, perG2, count),
-    convolve: (out, weights, count, taps, tapCount) =>
-      convolve(8 * out, 8 * weights, count, 8 * taps, tapCount),
-    multiplyPair: (out, outNext, weights, weightsNext, rows, stride, first, end, count) =>
-      multiplyPair(
-        8 * out,
-        8 * outNext,
-        8 * weights,
-        8 * weightsNext,
-        8 * rows,
-        8 * stride,
-        first,
-        end,
-        count,
-      ),
   };
 }

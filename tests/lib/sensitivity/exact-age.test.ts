@@ -9,7 +9,15 @@ import {
   simulateCompleteness,
   warmUpMaps,
 } from '@/lib/sensitivity';
-import { ageSides, momentsAt, prepareSide } from '@/lib/sensitivity/age-sides';
+import {
+  type AgeSide,
+  ageSides,
+  NORMAL_STEPS_PER_SIGMA,
+  normalTable,
+  SIDE_DOUBLES,
+  writeSide,
+} from '@/lib/sensitivity/age-sides';
+import { plainKernels } from '@/lib/sensitivity/kernels/plain';
 import { buildCurve, buildSettings, buildStar } from './build-star';
 
 // A shared machine may be slow: minutes are not expected.
@@ -132,6 +140,16 @@ describe('a cooling table', () => {
   });
 });
 
+/** P(age < e^x) of a side as the kernels tell it, and its integral. */
+function momentsAt(side: AgeSide, x: number): { chance: number; area: number } {
+  const table = normalTable();
+  const memory = plainKernels.reserve(SIDE_DOUBLES + table.length);
+  writeSide(side, memory.subarray(0, SIDE_DOUBLES));
+  memory.set(table, SIDE_DOUBLES);
+  plainKernels.setSides(0, 1, SIDE_DOUBLES, 1 / NORMAL_STEPS_PER_SIGMA, 0);
+  return { chance: plainKernels.chanceBefore(0, x), area: plainKernels.areaHere() };
+}
+
 describe('ageSides(age)', () => {
   test.each([
     ['percentiles', wide],
@@ -146,12 +164,8 @@ describe('ageSides(age)', () => {
     expect(whole).toBeCloseTo(1, 14);
     for (const p of [0.02, 0.2, 0.45, 0.55, 0.8, 0.98]) {
       const x = Math.log(quantile(p));
-      const at = new Float64Array(2);
       let below = points.values.every((age) => age < quantile(p)) ? single : 0;
-      for (const side of sides) {
-        momentsAt(prepareSide(side), x, at);
-        below += at[0];
-      }
+      for (const side of sides) below += momentsAt(side, x).chance;
       const isAtom = points.values.includes(quantile(p));
       if (!isAtom) expect(Math.abs(below - p)).toBeLessThan(4e-6);
     }
@@ -161,11 +175,9 @@ describe('ageSides(age)', () => {
     for (const side of [...ageSides(wide).sides, ...ageSides(field).sides]) {
       const middle = 0.3 * side.from + 0.7 * side.to;
       const step = 1e-4;
-      const [before, here, after] = [middle - step, middle, middle + step].map((x) => {
-        const at = new Float64Array(2);
-        momentsAt(prepareSide(side), x, at);
-        return { chance: at[0], area: at[1] };
-      });
+      const [before, here, after] = [middle - step, middle, middle + step].map((x) =>
+        momentsAt(side, x),
+      );
       expect((after.area - before.area) / (2 * step)).toBeCloseTo(here.chance, 6);
     }
   });
