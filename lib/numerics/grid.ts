@@ -99,3 +99,11 @@ export function unionAxis(axes: readonly Float64Array[]): Float64Array {
 export function logOf(axis: Float64Array): Float64Array {
   return axis.map(Math.log);
 }
+
+/** Whether two axes have the same values, bit for bit. */
+export function isSameAxis(a: Float64Array, b: Float64Array): boolean {
+  if (a === b) return true;
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
+  return true;
+}

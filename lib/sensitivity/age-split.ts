@@ -34,7 +34,7 @@ const NODES_OF_NARROW_SIDE = { smooth: 6, hard: 10 } as const;
  */
 export function splitAge(
   age: AgeOfStar,
-  forced: WeightedNodes,
+  forced: () => WeightedNodes,
   settings: Pick<SensitivitySettings, 'threshold' | 'ageNodesPerSide'>,
   nSigma: number,
 ): SplitAge {
@@ -42,7 +42,7 @@ export function splitAge(
   const smooth = (kind: keyof typeof SMOOTH_CELL_TIMES_SIGMA) =>
     stepNotAbove(SMOOTH_CELL_TIMES_SIGMA[kind] / nSigma);
   if (settings.ageNodesPerSide !== undefined) {
-    return { sides: [], single: forced, cellMag: smooth('single') };
+    return { sides: [], single: forced(), cellMag: smooth('single') };
   }
   const { points, sides } = ageSides(age);
   const spreads = sides.map(spreadOf);

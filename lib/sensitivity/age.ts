@@ -96,6 +96,30 @@ export function ageNodes(
   };
 }
 
+/**
+ * The least and the greatest of the age nodes, without those between.
+ *
+ * @param age see AgeOfStar
+ * @param threshold as for ageNodes
+ * @param nodesPerSide as for ageNodes
+ * @returns ages [Myr], shape [2]
+ * @throws as ageNodes does
+ */
+export function ageNodeEnds(
+  age: AgeOfStar,
+  threshold: SensitivitySettings['threshold'],
+  nodesPerSide: number = NODES_PER_SIDE[threshold],
+): Float64Array {
+  const first = 0.5 * (gaussLegendre(nodesPerSide).nodes[0] + 1);
+  let [least, most] = [Infinity, 0];
+  for (const part of ageParts(age)) {
+    const { kink, quantile } = preparedLaw(part.age);
+    least = Math.min(least, quantile(kink * first));
+    most = Math.max(most, quantile(1 - (1 - kink) * first));
+  }
+  return Float64Array.of(least, most);
+}
+
 function nodesOfLaw(law: AgeLaw, nodesPerSide: number): WeightedNodes {
   const { kink, quantile } = preparedLaw(law);
   if (quantile(0.01) === quantile(0.99)) {

@@ -1,4 +1,4 @@
-import { logOf } from '@/lib/numerics/grid';
+import { isSameAxis, logOf } from '@/lib/numerics/grid';
 import type { WeightedNodes } from './age';
 import { splitAge } from './age-split';
 import { coolNodes } from './cooling';
@@ -57,7 +57,7 @@ export function computeCompletenessMap(
   requireGrid(grid);
   const isByLevels = usesLevels(star, settings);
   const prepared = prepareStar(star, cooling, grid.massMjup, settings, !isByLevels);
-  const logAxis = logOf(grid.semiMajorAxisAu);
+  const logAxis = logAxisOf(grid);
   const completeness = isByLevels
     ? integrateByLevels(star, prepared, cooling, grid.massMjup, logAxis, settings)
     : cutToChances(direct(prepared, grid.massMjup.length, logAxis, settings));
@@ -73,6 +73,16 @@ export function computeCompletenessMap(
       ...(removed !== null && { nodesRemovedByStellarCompanion: removed }),
     },
   };
+}
+
+let lastAxis: { axisAu: Float64Array; logAxis: Float64Array } | null = null;
+
+/** ln a of a grid, [ln au]: the stars of a survey share one. */
+function logAxisOf({ semiMajorAxisAu }: MapGrid): Float64Array {
+  if (!lastAxis || !isSameAxis(lastAxis.axisAu, semiMajorAxisAu)) {
+    lastAxis = { axisAu: semiMajorAxisAu.slice(), logAxis: logOf(semiMajorAxisAu) };
+  }
+  return lastAxis.logAxis;
 }
 
 /** Several curves of one position are multiplied place by place; asked-for nodes are summed exactly. */
@@ -119,7 +129,7 @@ function integrateByLevels(
   const [curve] = prepared.curves;
   const { nSigma } = curve;
   const { band } = star.curves[0];
-  const age = splitAge(ageUnder(star, settings), prepared.ages, settings, nSigma);
+  const age = splitAge(ageUnder(star, settings), () => prepared.ages, settings, nSigma);
   const single = singleAges(age.single, star, cooling, massMjup, settings);
   const isHard = threshold === 'hard';
   const ofSingle =

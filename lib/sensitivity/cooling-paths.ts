@@ -1,3 +1,4 @@
+import { isSameAxis } from '@/lib/numerics/grid';
 import { bracket } from '@/lib/numerics/interpolate';
 import { BUILT_IN_LAW_RANGE, builtInMagnitudes } from './built-in-law';
 import type { CoolingRelation, CoolingTable, SensitivitySettings } from './types';
@@ -71,7 +72,7 @@ export function coolingPaths(
       entry.band === band &&
       entry.table === table &&
       entry.policy === policy &&
-      isSame(entry.massMjup, massMjup),
+      isSameAxis(entry.massMjup, massMjup),
   );
   if (known) return known.paths;
   const lines = table ? tableLines(table, band, massMjup, policy) : lawLines(band, massMjup);
@@ -79,12 +80,6 @@ export function coolingPaths(
   if (kept.length >= KEPT_PATHS) kept.shift();
   kept.push({ table, band, massMjup: massMjup.slice(), policy, paths });
   return paths;
-}
-
-function isSame(a: Float64Array, b: Float64Array): boolean {
-  if (a.length !== b.length) return false;
-  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
-  return true;
 }
 
 /** Magnitudes at both ends of every stretch of ages, shape [mass, stretch]; NaN has none. */

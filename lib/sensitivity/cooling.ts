@@ -80,39 +80,29 @@ export function coolNodes(
 }
 
 /**
- * The report of coolNodes alone, for a star whose ages are integrated without nodes.
+ * The report of coolNodes without the nodes, where the relation covers every age and mass.
  *
  * @param relation built-in law, or a table
  * @param band the curve's band
  * @param massMjup mass nodes, [M_Jup], not modified
- * @param agesMyr age nodes, [Myr], not modified
- * @param policy what to do outside the relation
- * @param starName for the error
- * @throws as coolNodes does
+ * @param endsMyr least and greatest age node, [Myr]
+ * @returns null where coolNodes has to look at every node
+ * @throws RangeError for an unknown band, a broken table, or a mass outside the built-in law's range
  */
-export function coolingReport(
+export function reportWithinRelation(
   relation: CoolingRelation,
   band: string,
   massMjup: Float64Array,
-  agesMyr: Float64Array,
-  policy: AgePolicy,
-  starName: string,
-): CoolingReport {
+  endsMyr: Float64Array,
+): CoolingReport | null {
+  const [least, most] = endsMyr;
+  const { range } = ageRange(relation);
+  if (!(least >= range[0] && most <= range[1])) return null;
+  // The law's temperature falls with age, so what holds at both ends holds between them.
   if (relation.kind === 'built-in') {
-    // The law's temperature falls with age, so what holds at both ends holds between them.
-    const [least, most] = [agesMyr.reduce(smaller), agesMyr.reduce(larger)];
-    const { ageMinMyr, ageMaxMyr } = BUILT_IN_LAW_RANGE;
-    if (least >= ageMinMyr && most <= ageMaxMyr) {
-      const flagged = massesOutsideValidity(massMjup, Float64Array.of(least, most), band);
-      return reportWithin(flagged);
-    }
+    return reportWithin(massesOutsideValidity(massMjup, endsMyr, band));
   }
-  if (relation.kind === 'table' && coversAll(relation.table, band, massMjup)) {
-    const { range } = ageRange(relation);
-    const isInside = (age: number) => age >= range[0] && age <= range[1];
-    if (agesMyr.every(isInside)) return reportWithin([]);
-  }
-  return coolNodes(relation, band, massMjup, agesMyr, policy, starName).report;
+  return coversAll(relation.table, band, massMjup) ? reportWithin([]) : null;
 }
 
 /** Every age lies within the relation; only the built-in law has masses outside its validity. */
@@ -142,9 +132,6 @@ function coversAll(table: CoolingTable, band: string, massMjup: Float64Array): b
     massMjup[massMjup.length - 1] <= tabulated[tabulated.length - 1]
   );
 }
-
-const smaller = (a: number, b: number) => Math.min(a, b);
-const larger = (a: number, b: number) => Math.max(a, b);
 
 /** How a result names the relation. */
 export function coolingName(relation: CoolingRelation): string {

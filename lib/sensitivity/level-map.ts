@@ -1,3 +1,4 @@
+import { isSameAxis } from '@/lib/numerics/grid';
 import { cellRange } from './cell-range';
 import { cellOfZero } from './cooling-paths';
 import { compiledKernels } from './kernels/compiled';
@@ -133,30 +134,24 @@ interface LawRows {
 }
 
 interface KeptRows extends LawRows {
-  law: string;
+  law: EccentricityLaw;
   logAxis: Float64Array;
 }
 
 let lastRows: KeptRows | null = null;
 
 function rowsOfLaw(law: EccentricityLaw, logAxis: Float64Array, stride: number): LawRows {
-  const key = lawKey(law);
-  if (lastRows?.law === key && isSame(lastRows.logAxis, logAxis)) return lastRows;
+  const isKnown = lastRows && isSameLaw(lastRows.law, law);
+  if (lastRows && isKnown && isSameAxis(lastRows.logAxis, logAxis)) return lastRows;
   const axisStep = evenStep(logAxis);
   const axis = logAxis.slice();
   if (axisStep === null) {
-    lastRows = { law: key, logAxis: axis, phases: null, tables: [joinedTable(law), axis] };
+    lastRows = { law: { ...law }, logAxis: axis, phases: null, tables: [joinedTable(law), axis] };
   } else {
     const phases = separationPhases(law, logAxis[0], axisStep, stride);
-    lastRows = { law: key, logAxis: axis, phases, tables: [phases.planes] };
+    lastRows = { law: { ...law }, logAxis: axis, phases, tables: [phases.planes] };
   }
   return lastRows;
-}
-
-function isSame(a: Float64Array, b: Float64Array): boolean {
-  if (a.length !== b.length) return false;
-  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
-  return true;
 }
 
 function setPhases(kernels: Kernels, phases: SeparationPhases, planes: number): void {
@@ -184,12 +179,21 @@ function setTable(
   kernels.setTable(table, cumulative.length - 1, start, step, axis, columns);
 }
 
-/** Names a law with its numbers: this is asked for every star. */
-function lawKey(law: EccentricityLaw): string {
-  if (law.law === 'beta') return `beta ${law.alpha} ${law.beta}`;
-  if (law.law === 'fixed') return `fixed ${law.eccentricity}`;
-  if (law.law === 'uniform') return `uniform ${law.max}`;
-  return law.law === 'rayleigh' ? `rayleigh ${law.sigma}` : law.law;
+/** Every number that a law has, whatever its kind: this is asked for every star. */
+type LawNumbers = { law: string } & Partial<
+  Record<'alpha' | 'beta' | 'eccentricity' | 'max' | 'sigma', number>
+>;
+
+function isSameLaw(a: EccentricityLaw, b: EccentricityLaw): boolean {
+  const [x, y]: LawNumbers[] = [a, b];
+  return (
+    x.law === y.law &&
+    x.alpha === y.alpha &&
+    x.beta === y.beta &&
+    x.eccentricity === y.eccentricity &&
+    x.max === y.max &&
+    x.sigma === y.sigma
+  );
 }
 
 /** First column, by blocks, whose largest separation reaches the curve's beginning. */

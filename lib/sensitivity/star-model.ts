@@ -1,7 +1,7 @@
 import { distanceModulus } from '@/lib/quantities/magnitudes';
-import { ageNodes, type WeightedNodes } from './age';
+import { ageNodeEnds, ageNodes, type WeightedNodes } from './age';
 import { checkContrastCurve } from './contrast';
-import { coolingReport, coolNodes } from './cooling';
+import { coolNodes, reportWithinRelation } from './cooling';
 import { distanceNodes } from './distance';
 import { effectiveCurve } from './effective-curve';
 import { ageUnder } from './field-age';
@@ -22,15 +22,16 @@ export interface PreparedCurve {
   coverage: Float64Array;
   nSigma: number;
   /**
-   * Absolute magnitudes in the curve's band, shape [mass, age]; Infinity is never detected. Empty
-   * where the star was prepared without them.
+   * Absolute magnitudes in the curve's band, shape [mass, age]; Infinity is never detected. May be
+   * empty where the star was prepared without them.
    */
   magnitudes: Float64Array;
 }
 
 /** A star ready for integration: nodes of age and distance, curves, and magnitudes at the nodes. */
 export interface PreparedStar {
-  ages: WeightedNodes;
+  /** Worked out when first asked for: most maps need none. */
+  readonly ages: WeightedNodes;
   distances: WeightedNodes;
   /** ln d and μ at each distance node. */
   logDistance: Float64Array;
@@ -38,6 +39,8 @@ export interface PreparedStar {
   curves: PreparedCurve[];
   report: CoolingReport;
 }
+
+const NO_MAGNITUDES = new Float64Array(0);
 
 /**
  * Checks a star's inputs and evaluates its cooling relation.
@@ -57,7 +60,17 @@ export function prepareStar(
   needsMagnitudes = true,
 ): PreparedStar {
   const hostMags = apparentMags(star);
-  const ages = ageNodes(ageUnder(star, settings), settings.threshold, settings.ageNodesPerSide);
+  const nodeRule = [
+    ageUnder(star, settings),
+    settings.threshold,
+    settings.ageNodesPerSide,
+  ] as const;
+  let nodes: WeightedNodes | null = null;
+  const ages = () => {
+    nodes ??= ageNodes(...nodeRule);
+    return nodes;
+  };
+  const ends = ageNodeEnds(...nodeRule);
   const distances = distanceNodes(star.distance);
   const extinctionMag = star.extinctionMag ?? 0;
   if (!Number.isFinite(extinctionMag)) {
@@ -66,16 +79,19 @@ export function prepareStar(
   const reports: CoolingReport[] = [];
   const curves = star.curves.map((curve, s) => {
     checkContrastCurve(curve, star.name);
-    const cool = [cooling, curve.band, massMjup, ages.values, settings, star.name] as const;
-    const cooled = needsMagnitudes
-      ? coolNodes(...cool)
-      : { magnitudes: new Float64Array(0), report: coolingReport(...cool) };
+    const { band } = curve;
+    const within = needsMagnitudes ? null : reportWithinRelation(cooling, band, massMjup, ends);
+    const cooled = within
+      ? { magnitudes: NO_MAGNITUDES, report: within }
+      : coolNodes(cooling, band, massMjup, ages().values, settings, star.name);
     reports.push(cooled.report);
     const effective = effectiveCurve(curve, star, settings);
     return prepareCurve(effective, hostMags[s] - extinctionMag, cooled.magnitudes);
   });
   return {
-    ages,
+    get ages() {
+      return ages();
+    },
     distances,
     logDistance: distances.values.map(Math.log),
     modulus: distances.values.map(distanceModulus),
@@ -112,10 +128,17 @@ function prepareCurve(
   hostMag: number,
   magnitudes: Float64Array,
 ): PreparedCurve {
+  const points = curve.contrastMag.length;
+  const logSeparation = new Float64Array(points);
+  const limitMag = new Float64Array(points);
+  for (let i = 0; i < points; i++) {
+    logSeparation[i] = Math.log(curve.separationArcsec[i]);
+    limitMag[i] = hostMag + curve.contrastMag[i];
+  }
   return {
-    logSeparation: curve.separationArcsec.map(Math.log),
-    limitMag: curve.contrastMag.map((contrast) => hostMag + contrast),
-    coverage: curve.coverage ?? new Float64Array(curve.contrastMag.length).fill(1),
+    logSeparation,
+    limitMag,
+    coverage: curve.coverage ?? new Float64Array(points).fill(1),
     nSigma: curve.nSigma,
     magnitudes,
   };
