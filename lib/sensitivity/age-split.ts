@@ -14,11 +14,11 @@ export interface SplitAge {
  * Widths of cells under a smooth threshold, times n: its own width is 1.09 mag / n. Ages blur it
  * further, so that wider cells do for an age that is uncertain enough.
  */
-const SMOOTH_CELL_TIMES_SIGMA = { single: 0.25, narrow: 0.5, wide: 1 } as const;
+const SMOOTH_CELL_TIMES_SIGMA = { single: 0.3125, narrow: 0.625, wide: 1.25 } as const;
 /** Spread in ln t from which an age is wide: 0.1 dex. */
 const WIDE_SPREAD = 0.23;
 /** Widths of cells are halves of halves, so that stars share what is kept per width. */
-const WIDEST_CELL_MAG = 0.2;
+const WIDEST_CELL_MAG = { smooth: 0.25, hard: 0.2 } as const;
 const NARROWEST_CELL_MAG = 0.025;
 /** A companion fades by at least about a magnitude as its age grows by a factor e. */
 const CELL_PER_SPREAD = 0.7;
@@ -40,7 +40,7 @@ export function splitAge(
 ): SplitAge {
   const isHard = settings.threshold === 'hard';
   const smooth = (kind: keyof typeof SMOOTH_CELL_TIMES_SIGMA) =>
-    stepNotAbove(SMOOTH_CELL_TIMES_SIGMA[kind] / nSigma);
+    stepNotAbove(SMOOTH_CELL_TIMES_SIGMA[kind] / nSigma, 'smooth');
   if (settings.ageNodesPerSide !== undefined) {
     return { sides: [], single: forced(), cellMag: smooth('single') };
   }
@@ -50,7 +50,7 @@ export function splitAge(
   const hasSingle = points.values.length > 0 || !spreads.every(isFollowed);
   const narrowest = spreads.filter(isFollowed).reduce((a, b) => Math.min(a, b), Infinity);
   const kind = hasSingle ? 'single' : narrowest >= WIDE_SPREAD ? 'wide' : 'narrow';
-  const cellMag = isHard ? stepNotAbove(narrowest * CELL_PER_SPREAD) : smooth(kind);
+  const cellMag = isHard ? stepNotAbove(narrowest * CELL_PER_SPREAD, 'hard') : smooth(kind);
   const integrated = sides.filter((side) => spreadOf(side) * CELL_PER_SPREAD >= 0.5 * cellMag);
   const values = [...points.values];
   const weights = [...points.weights];
@@ -67,8 +67,8 @@ export function splitAge(
   };
 }
 
-function stepNotAbove(wanted: number): number {
-  let step = WIDEST_CELL_MAG;
+function stepNotAbove(wanted: number, threshold: keyof typeof WIDEST_CELL_MAG): number {
+  let step: number = WIDEST_CELL_MAG[threshold];
   while (step > wanted && step > NARROWEST_CELL_MAG) step /= 2;
   return step;
 }

@@ -158,7 +158,7 @@ export function multiplyPair(
   }
 }
 
-/** Cuts `count` numbers to 0…1. */
+/** Cuts `count` numbers to 0…1; one that is none stays so. */
 export function clip(at: i32, count: i32): void {
   const m = memory;
   for (let i = at; i < at + count; i++) m[i] = Math.min(1, Math.max(0, m[i]));

@@ -188,7 +188,9 @@ export function clip(at: i32, count: i32): void {
   const end = bytes(at + count);
   let place = bytes(at);
   for (; place + 16 <= end; place += 16) {
-    v128.store(place, f64x2.min(one, f64x2.max(zero, v128.load(place))));
+    // Adding 0 makes a -0 a 0.
+    const value = f64x2.pmin(f64x2.pmax(v128.load(place), zero), one);
+    v128.store(place, f64x2.add(value, zero));
   }
   if (place < end) store<f64>(place, Math.min(1, Math.max(0, load<f64>(place))));
 }
