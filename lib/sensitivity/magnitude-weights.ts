@@ -31,7 +31,7 @@ export interface WeightInputs {
 }
 
 /** What the kernels keep of a side from mass to mass, in doubles. */
-const SEARCHES_OF_SIDE = 3;
+const SEARCHES_OF_SIDE = 2;
 const NO_TABLE = new Float64Array(0);
 
 /** Tables that the kernels read while the weights are made: they stay from star to star. */

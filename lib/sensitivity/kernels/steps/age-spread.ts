@@ -4,8 +4,8 @@ import { clear, put, real, whole } from '../machine';
 const STRETCH: i32 = 4;
 /** Doubles of a side, see PreparedSide. */
 const SIDE: i32 = 10;
-/** Doubles that are kept of a side from mass to mass: where its three searches ended. */
-const HINTS: i32 = 3;
+/** Doubles that are kept of a side from mass to mass: where its two searches ended. */
+const HINTS: i32 = 2;
 
 // Chance and area at the place that was last asked for, see momentsAt.
 let chance: f64 = 0;
@@ -154,48 +154,37 @@ function spreadSide(mass: i32, side: i32, hints: i32): void {
   // The last record of a mass only tells where its last stretch ends.
   const end = whole(real(begins + mass + 1)) - 1;
   let low = firstAbove(STRETCH, begin, end, real(side + 1), hints);
-  let last = end;
-  if (isFading) {
-    // What is brighter or fainter than the cells lies before or after them in one piece.
-    const reached = firstAbove(1, begin, end, lowest - 1, hints + 1);
-    if (reached > low) low = reached;
-    last = firstAbove(1, begin, end, highest - 1, hints + 2);
-  }
-  const isSpread = low < last && real(stretches + STRETCH * low) < to;
-  if (!isSpread) {
-    if (!isFading) return;
-    // One place tells the share before the cells; none of the rest is among them.
-    spreadTotal += weight;
-    spreadBrighter += chanceBefore(side, low < end ? real(stretches + STRETCH * low) : Infinity);
-    return;
+  // What fades is seen at first, then among the cells, then no more: the rest needs no walk.
+  if (isFading && low < end && real(stretches + STRETCH * low + 1) < lowest) {
+    low = firstAbove(1, begin, end, lowest - 1, hints + 1);
   }
   let record = stretches + STRETCH * low;
-  let x = real(record);
+  let x: f64 = low < end ? real(record) : Infinity;
+  const before = chanceBefore(side, x);
   if (isFading) {
-    const after = chanceBefore(side, Math.min(real(stretches + STRETCH * last), to));
-    const before = chanceBefore(side, x);
-    spreadTotal += weight - (after - before);
+    spreadTotal += weight;
     spreadBrighter += before;
-  } else {
-    chanceBefore(side, x);
   }
   let chanceB = chance;
   let areaB = area;
-  const past = stretches + STRETCH * last;
+  const past = stretches + STRETCH * end;
   for (; record < past && x < to; record += STRETCH) {
+    const c = whole(real(record + 1));
+    if (isFading && c >= highest) break;
     const xA: f64 = x;
     const chanceA: f64 = chanceB;
     const areaA: f64 = areaB;
     x = real(record + STRETCH);
     chanceB = chanceBefore(side, x);
     areaB = area;
-    const c = whole(real(record + 1));
     const here: f64 = chanceB - chanceA;
     // A cell below 0 has no magnitude.
     if (c < 0 || !(here > 0)) continue;
-    spreadTotal += here;
-    if (c < lowest) spreadBrighter += here;
-    if (c < lowest || c >= highest) continue;
+    if (!isFading) {
+      spreadTotal += here;
+      if (c < lowest) spreadBrighter += here;
+      if (c < lowest || c >= highest) continue;
+    }
     if (c < spreadFirst) spreadFirst = c;
     if (c >= spreadEnd) spreadEnd = c + 1;
     const place = deposit + c - lowest;
