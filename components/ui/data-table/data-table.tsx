@@ -1,11 +1,19 @@
 'use client';
 
-import { lazy, type ReactNode, Suspense, useRef } from 'react';
+import {
+  lazy,
+  type ReactNode,
+  Suspense,
+  startTransition,
+  useEffect,
+  useRef,
+  useState,
+} from 'react';
 import { saveFile } from '@/components/charts/save-file';
 import { Cell, Row, TableBody, TableHead } from '../table';
 import type { DataColumn, Facet } from './column';
 import { FilterBar } from './filter-bar';
-import { firstRows, MANY, type RowWindow } from './row-window';
+import { allRows, firstRows, MANY, type RowWindow } from './row-window';
 import { rowsCsv } from './rows-csv';
 import { SelectBox, SelectHead } from './select-box';
 import { SortHead } from './sort-head';
@@ -63,6 +71,9 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
   const { shown, selected, ...boxes } = useDataRows({ ...props, facets, view });
   const scroller = useRef<HTMLDivElement>(null);
   const isVirtual = shown.length >= MANY;
+  // The server draws the first screen alone: the page is sooner there, and the rest follows at once.
+  const [hasRest, setHasRest] = useState(false);
+  useEffect(() => startTransition(() => setHasRest(true)), []);
   const isSelecting = selection !== undefined;
   const width = columns.length + (isSelecting ? 1 : 0);
   const chosen = selection?.ids.size ?? 0;
@@ -161,7 +172,7 @@ export function DataTable<R extends object>(props: DataTableProps<R>) {
               <RowsInSight count={shown.length} scroller={scroller} draw={draw} />
             </Suspense>
           ) : (
-            draw(firstRows(shown.length))
+            draw(hasRest ? allRows(shown.length) : firstRows(shown.length))
           )}
           {shown.length === 0 && (
             <tr>

@@ -16,9 +16,13 @@ export interface RowWindow {
 /** Rows of the first screen before anything was measured. */
 const FIRST = 32;
 
-/** The first rows, with room for the others; all of them while they are few. */
+export function allRows(count: number): RowWindow {
+  return { indices: Array.from({ length: count }, (_, index) => index), before: 0, after: 0 };
+}
+
+/** The first rows, with room for the others. */
 export function firstRows(count: number): RowWindow {
-  const drawn = count < MANY ? count : FIRST;
+  const drawn = Math.min(count, FIRST);
   return {
     indices: Array.from({ length: drawn }, (_, index) => index),
     before: 0,
