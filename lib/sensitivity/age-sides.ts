@@ -130,16 +130,13 @@ export function sideNodes(
   return { values, weights: weights.map((w) => 0.5 * w * weight) };
 }
 
-/** Numbers that tell the kernels of one side. */
-export const SIDE_DOUBLES = 10;
-
 /**
  * Writes a side for the kernels: its weight, ends and spread; then, for a normal law, ln t of the
  * table's first node, its nodes per ln Myr, the side's weight over what the table gains along it,
  * the table's values at the side's beginning and the area along all of the side.
  *
  * @param side see AgeSide
- * @param out SIDE_DOUBLES numbers are written to it
+ * @param out SIDE numbers of the kernels are written to it
  */
 export function writeSide({ weight, from, to, centre, sigma }: AgeSide, out: Float64Array): void {
   out.fill(0);

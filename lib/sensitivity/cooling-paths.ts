@@ -1,6 +1,7 @@
 import { isSameAxis } from '@/lib/numerics/grid';
 import { bracket } from '@/lib/numerics/interpolate';
 import { BUILT_IN_LAW_RANGE, builtInMagnitudes } from './built-in-law';
+import { STRETCH } from './kernels/steps/age-spread';
 import type { CoolingRelation, CoolingTable, SensitivitySettings } from './types';
 
 /**
@@ -24,7 +25,6 @@ export interface CoolingPaths {
 }
 
 const UNDETECTABLE = -1;
-const RECORD = 4;
 /** Magnitudes from -20 to 60 have cells of their own; what lies beyond counts at the ends. */
 const BRIGHTEST_MAG = -20;
 const FAINTEST_MAG = 60;
@@ -170,11 +170,11 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     records[end + 1] = cell;
     records[end + 2] = a;
     records[end + 3] = b;
-    end += RECORD;
+    end += STRETCH;
   };
   /** Whether a stretch goes on in the same cell, on one line with the last. */
   const goesOn = (xA: number, xB: number, cell: number, a: number, b: number) => {
-    const before = end - RECORD;
+    const before = end - STRETCH;
     if (before < first || records[before + 1] !== cell) return false;
     const from = records[before];
     if (!Number.isFinite(from) || !Number.isFinite(xB)) return false;
@@ -210,7 +210,7 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
 
   for (let i = 0; i < masses; i++) {
     first = end;
-    begins[i] = end / RECORD;
+    begins[i] = end / STRETCH;
     const row = i * lines;
     addLine(-Infinity, logAge[0], fromMag[row], fromMag[row]);
     for (let k = 0; k < lines; k++) {
@@ -220,7 +220,7 @@ function cutIntoCells({ logAge, fromMag, toMag }: Lines, cellMag: number): Cooli
     addLine(logAge[lines], Infinity, oldest, oldest);
     addRecord(Infinity, 0, 0, 0);
   }
-  begins[masses] = end / RECORD;
+  begins[masses] = end / STRETCH;
   const stretches = records.slice(0, end);
   return { cellMag, masses, stretches, begins, fades: fadingMasses(stretches, begins) };
 }
@@ -230,8 +230,8 @@ function fadingMasses(stretches: Float64Array, begins: Float64Array): Float64Arr
   for (let i = 0; i < fades.length; i++) {
     const last = begins[i + 1] - 2;
     for (let s = begins[i]; s <= last; s++) {
-      const cell = stretches[RECORD * s + 1];
-      const isBrighter = s < last && stretches[RECORD * (s + 1) + 1] < cell;
+      const cell = stretches[STRETCH * s + 1];
+      const isBrighter = s < last && stretches[STRETCH * (s + 1) + 1] < cell;
       if (cell === UNDETECTABLE || isBrighter) fades[i] = 0;
     }
   }

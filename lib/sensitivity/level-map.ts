@@ -102,7 +102,7 @@ export function levelMap(
   kernels.multiplyRows(out, masses, columns, factors, width, bands, rows, stride, firstColumn);
   const size = masses * columns;
   if (besides) for (let i = 0; i < size; i++) memory[out + i] += besides[i];
-  kernels.clipMap(out, size);
+  kernels.clip(out, size);
   return memory.slice(out, out + size);
 }
 

@@ -6,9 +6,9 @@ export interface MagnitudeKernel {
   /** First and last cell with a rise. */
   from: number;
   to: number;
-  /** Rises, an even number of them and a 0 last where they are odd; taps has 0s around them. */
+  /** Number of rises, made even by a 0 at their end. */
   count: number;
-  /** A 0, the rises, and two 0s: as the kernels read them. */
+  /** A 0, the rises, and two 0s: as the kernels read them, shape [count + 3]. */
   taps: Float64Array;
   /** Chance without a signal. */
   base: number;

@@ -1,13 +1,8 @@
-import {
-  type AgeSide,
-  NORMAL_STEPS_PER_SIGMA,
-  normalTable,
-  SIDE_DOUBLES,
-  writeSide,
-} from './age-sides';
+import { type AgeSide, NORMAL_STEPS_PER_SIGMA, normalTable, writeSide } from './age-sides';
 import type { CellRange } from './cell-range';
 import { type CoolingPaths, cellOfZero } from './cooling-paths';
 import type { Kernels } from './kernels/kernels';
+import { HINTS, SIDE } from './kernels/steps/age-spread';
 import { magnitudeKernel, SPREAD } from './magnitude-kernel';
 import { START_MAG, thresholdTable } from './threshold-table';
 import type { SensitivitySettings } from './types';
@@ -30,8 +25,6 @@ export interface WeightInputs {
   nSigma: number;
 }
 
-/** What the kernels keep of a side from mass to mass, in doubles. */
-const SEARCHES_OF_SIDE = 2;
 const NO_TABLE = new Float64Array(0);
 
 /** Tables that the kernels read while the weights are made: they stay from star to star. */
@@ -50,10 +43,7 @@ export function weightTables({ paths, single, threshold, nSigma }: WeightInputs)
 export function weightScratch(inputs: WeightInputs, cells: number): number {
   const { sides, single, threshold, nSigma, paths } = inputs;
   const { from, to } = magnitudeKernel(threshold, nSigma, paths.cellMag);
-  const ages =
-    sides.length * (SIDE_DOUBLES + SEARCHES_OF_SIDE) +
-    single.weights.length +
-    single.magnitudes.length;
+  const ages = sides.length * (SIDE + HINTS) + single.weights.length + single.magnitudes.length;
   return ages + 2 * (cells + to - from) + (to - from) + 32;
 }
 
@@ -79,11 +69,11 @@ export function fillMagnitudeWeights(
   const memory = kernels.reserve(0);
   const [stretches, begins, fades, normal, taps, table] = places;
   const { cellMag, masses } = paths;
-  let free = scratch + SEARCHES_OF_SIDE * sides.length;
+  let free = scratch + HINTS * sides.length;
   const sidesAt = free;
   for (const side of sides) {
-    writeSide(side, memory.subarray(free, free + SIDE_DOUBLES));
-    free += SIDE_DOUBLES;
+    writeSide(side, memory.subarray(free, free + SIDE));
+    free += SIDE;
   }
   const ages = single.weights.length;
   const magnitudes = free + ages;

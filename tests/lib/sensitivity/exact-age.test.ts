@@ -14,10 +14,10 @@ import {
   ageSides,
   NORMAL_STEPS_PER_SIGMA,
   normalTable,
-  SIDE_DOUBLES,
   writeSide,
 } from '@/lib/sensitivity/age-sides';
 import { plainKernels } from '@/lib/sensitivity/kernels/plain';
+import { HINTS, SIDE } from '@/lib/sensitivity/kernels/steps/age-spread';
 import { buildCurve, buildSettings, buildStar } from './build-star';
 
 // A shared machine may be slow: minutes are not expected.
@@ -143,10 +143,10 @@ describe('a cooling table', () => {
 /** P(age < e^x) of a side as the kernels tell it, and its integral. */
 function momentsAt(side: AgeSide, x: number): { chance: number; area: number } {
   const table = normalTable();
-  const memory = plainKernels.reserve(SIDE_DOUBLES + table.length);
-  writeSide(side, memory.subarray(0, SIDE_DOUBLES));
-  memory.set(table, SIDE_DOUBLES);
-  plainKernels.setSides(0, 1, SIDE_DOUBLES, 1 / NORMAL_STEPS_PER_SIGMA, 0);
+  const memory = plainKernels.reserve(SIDE + table.length + HINTS);
+  writeSide(side, memory.subarray(0, SIDE));
+  memory.set(table, SIDE);
+  plainKernels.setSides(0, 1, SIDE, 1 / NORMAL_STEPS_PER_SIGMA, SIDE + table.length);
   return { chance: plainKernels.chanceBefore(0, x), area: plainKernels.areaHere() };
 }
 

@@ -1,11 +1,11 @@
 import { clear, put, real, whole } from '../machine';
 
 /** Doubles of a stretch: ln t where it begins, its cell, and its places in the cell at both ends. */
-const STRETCH: i32 = 4;
-/** Doubles of a side, see PreparedSide. */
-const SIDE: i32 = 10;
+export const STRETCH: i32 = 4;
+/** Doubles of a side, see writeSide. */
+export const SIDE: i32 = 10;
 /** Doubles that are kept of a side from mass to mass: where its two searches ended. */
-const HINTS: i32 = 2;
+export const HINTS: i32 = 2;
 
 // Chance and area at the place that was last asked for, see momentsAt.
 let chance: f64 = 0;
@@ -51,7 +51,7 @@ export function setSides(
  * P(age < t) of one side, from 0 to the side's weight; areaHere tells its integral over ln t from
  * the side's beginning.
  *
- * @param side place of its numbers, see PreparedSide
+ * @param side place of its numbers, see writeSide
  * @param x ln t, [ln Myr], may be infinite
  * Accuracy: 2e-6 of the side's weight; area is the exact integral of the lines behind chance.
  */

@@ -1,4 +1,4 @@
-import { clear, clip, move, multiplyPair, real, whole } from '../machine';
+import { clear, move, multiplyPair, real, whole } from '../machine';
 
 /**
  * C = W · H of every mass, pressed together to `columns` of a row.
@@ -40,9 +40,4 @@ export function multiplyRows(
     move(out + m * columns + firstColumn, out + m * stride + firstColumn, columns - firstColumn);
     clear(out + m * columns, firstColumn);
   }
-}
-
-/** Cuts a map to 0…1. */
-export function clipMap(at: i32, count: i32): void {
-  clip(at, count);
 }

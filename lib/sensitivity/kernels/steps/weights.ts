@@ -17,7 +17,7 @@ let lastTap: i32 = 0;
 let base: f64 = 0;
 let isBetweenPoints: i32 = 0;
 
-/** @param tapsAt the rises, with a 0 before them and two after them or three, so that they are even */
+/** @param tapsAt the first of `count` rises: a 0 stands before it, two stand after the last */
 export function setKernel(
   tapsAt: i32,
   count: i32,
