@@ -1,33 +1,27 @@
 import { Op } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { logSpacedAxis } from '@/lib/numerics/grid';
-import { populationWeights } from '@/lib/population';
 import { describeStoredCombination } from '@/lib/schemas/combination-words';
 import type {
   CombinationDefinition,
   CombinationPreview,
   StarRule,
 } from '@/lib/schemas/combinations';
-import {
-  type CompletenessMap,
-  combineDeepest,
-  combineIndependent,
-  type MapGrid,
-  regridNodes,
-} from '@/lib/sensitivity';
+import type { MapSettings } from '@/lib/schemas/surveys';
 import { CompletenessMapRow, ContrastCurveRow, StarRow, SurveyRow, TargetRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
-import { mapOfRow } from '@/models/map-on-grid';
 import { wasChosenForCompanion } from '@/models/sample-selection';
 import { checkCombination } from './combinations';
-import { currentYardstick, summariseMaps } from './survey-depth';
+import {
+  currentYardstick,
+  gridOfSettings,
+  type MapsTogether,
+  summariseTogether,
+} from './survey-depth';
 
-interface Entry {
-  survey: SurveyRow;
-  target: TargetRow;
+type Entry = Pick<TargetRow, 'id' | 'surveyId' | 'starId' | 'mapId' | 'mapState' | 'attributes'> & {
   isComputed: boolean;
-}
+};
 
 /** The surveys in the order of the combination, and what they list and may count. */
 async function loadEntries(actor: Actor, { surveyIds }: CombinationDefinition) {
@@ -35,31 +29,33 @@ async function loadEntries(actor: Actor, { surveyIds }: CombinationDefinition) {
     where: { id: surveyIds, collaborationId: actor.collaborationId },
   });
   const surveys = surveyIds.flatMap((id) => rows.find((row) => row.id === id) ?? []);
-  const targets = await TargetRow.findAll({
+  const targets: Omit<Entry, 'isComputed'>[] = await TargetRow.findAll({
+    attributes: ['id', 'surveyId', 'starId', 'mapId', 'mapState', 'attributes'],
     where: { surveyId: surveyIds, leftOutReason: { [Op.is]: null } },
     order: [['foldedName', 'ASC']],
+    raw: true,
   });
   const counted = targets.filter((target) => !wasChosenForCompanion(target));
-  const curves = await ContrastCurveRow.findAll({
-    attributes: ['targetId'],
-    where: { targetId: counted.map(({ id }) => id), replacedAt: null },
-  });
-  const maps = await CompletenessMapRow.findAll({
-    attributes: ['id', 'origin'],
-    where: { id: counted.flatMap(({ mapId }) => mapId ?? []) },
-  });
+  const [curves, maps] = await Promise.all([
+    ContrastCurveRow.findAll({
+      attributes: ['targetId'],
+      where: { targetId: counted.map(({ id }) => id), replacedAt: null },
+      raw: true,
+    }),
+    CompletenessMapRow.findAll({
+      attributes: ['id', 'origin'],
+      where: { id: counted.flatMap(({ mapId }) => mapId ?? []) },
+      raw: true,
+    }),
+  ]);
   const originOf = new Map(maps.map(({ id, origin }) => [id, origin]));
   const withCurve = new Set(curves.map(({ targetId }) => targetId));
-  const entries = surveys.flatMap((survey) =>
-    counted
-      .filter(({ surveyId }) => surveyId === survey.id)
-      .map((target): Entry => {
-        const isComputed =
-          withCurve.has(target.id) && originOf.get(target.mapId ?? '') === 'computed';
-        return { survey, target, isComputed };
-      }),
-  );
-  return { surveys, entries };
+  const ofSurvey = new Map<string, Entry[]>(surveys.map(({ id }) => [id, []]));
+  for (const target of counted) {
+    const isComputed = withCurve.has(target.id) && originOf.get(target.mapId ?? '') === 'computed';
+    ofSurvey.get(target.surveyId)?.push({ ...target, isComputed });
+  }
+  return { surveys, entries: [...ofSurvey.values()].flat(), ofSurvey };
 }
 
 /** What a combination holds: its overlaps, each star's rule, and what each survey adds. */
@@ -69,19 +65,26 @@ export async function previewCombination(
 ): Promise<CombinationPreview> {
   demand(actor, 'read');
   await checkCombination(actor, definition);
-  const { surveys, entries } = await loadEntries(actor, definition);
+  const { surveys, entries, ofSurvey } = await loadEntries(actor, definition);
   const entriesOf = new Map<string, Entry[]>();
   for (const entry of entries) {
-    const list = entriesOf.get(entry.target.starId);
+    const list = entriesOf.get(entry.starId);
     if (list) list.push(entry);
-    else entriesOf.set(entry.target.starId, [entry]);
+    else entriesOf.set(entry.starId, [entry]);
   }
+  const settingsOf = new Map(surveys.map(({ id, mapSettings }) => [id, mapSettings]));
   const sharedIds = [...entriesOf].flatMap(([id, list]) => (list.length > 1 ? [id] : []));
-  const stars = await StarRow.findAll({ where: { id: sharedIds }, order: [['name', 'ASC']] });
+  const stars = await StarRow.findAll({
+    attributes: ['id', 'name'],
+    where: { id: sharedIds },
+    order: [['name', 'ASC']],
+    raw: true,
+  });
   const shared = stars.map(({ id, name }) => {
     const own = entriesOf.get(id) as Entry[];
-    const canSamePosition = own.every(({ isComputed }) => isComputed) && haveOneRecipe(own);
-    const surveyIds = own.map(({ survey }) => survey.id);
+    const canSamePosition =
+      own.every(({ isComputed }) => isComputed) && haveOneRecipe(own, settingsOf);
+    const surveyIds = own.map(({ surveyId }) => surveyId);
     const rule = ruleOf(definition, id, canSamePosition);
     return { starId: id, name, surveyIds, canSamePosition, rule };
   });
@@ -93,15 +96,15 @@ export async function previewCombination(
     stars: entriesOf.size,
     entries: entries.length,
     surveys: surveys.map((survey, place) => {
-      const own = entries.filter((entry) => entry.survey === survey);
-      const isNew = (entry: Entry) => entriesOf.get(entry.target.starId)?.[0] === entry;
+      const own = ofSurvey.get(survey.id) as Entry[];
+      const isNew = (entry: Entry) => entriesOf.get(entry.starId)?.[0] === entry;
       return {
         id: survey.id,
         name: survey.name,
         position: survey.position,
         entries: own.length,
         newStars: own.filter(isNew).length,
-        withoutMap: own.filter(({ target }) => target.mapState !== 'ready').length,
+        withoutMap: own.filter(({ mapState }) => mapState !== 'ready').length,
         adds: [...adds[place]],
       };
     }),
@@ -111,9 +114,13 @@ export async function previewCombination(
 }
 
 /** Grids may differ; everything else that makes a curve a map may not. */
-function haveOneRecipe(entries: Entry[]): boolean {
-  const rules = entries.map(({ survey: { mapSettings } }) => {
-    const { massMjup: _mass, semiMajorAxisAu: _axis, ...rest } = mapSettings;
+function haveOneRecipe(entries: Entry[], settingsOf: Map<string, MapSettings>): boolean {
+  const rules = entries.map(({ surveyId }) => {
+    const {
+      massMjup: _mass,
+      semiMajorAxisAu: _axis,
+      ...rest
+    } = settingsOf.get(surveyId) as MapSettings;
     return canonicalJson(rest);
   });
   return rules.every((rule) => rule === rules[0]);
@@ -143,59 +150,31 @@ async function sumUp(
   entriesOf: Map<string, Entry[]>,
   ruleOfStar: Map<string, StarRule>,
 ) {
-  const { massMjup: mass, semiMajorAxisAu: axis } = surveys[0].mapSettings;
-  const grid: MapGrid = {
-    massMjup: logSpacedAxis(mass.min, mass.max, mass.count),
-    semiMajorAxisAu: logSpacedAxis(axis.min, axis.max, axis.count),
-  };
-  const yardstick = await currentYardstick(actor.collaborationId);
-  const weights = populationWeights(grid, yardstick.population).mass;
+  const grid = gridOfSettings(surveys[0].mapSettings);
   const adds = surveys.map(() => new Float64Array(grid.semiMajorAxisAu.length));
   const place = new Map(surveys.map(({ id }, i) => [id, i]));
-  const add = (surveyId: string, profile: Float64Array, before?: Float64Array) => {
+  const steps = [...entriesOf].flatMap(([starId, list]) => {
+    const ready = list.filter(({ mapState, mapId }) => mapState === 'ready' && mapId !== null);
+    const mapIds = ready.map(({ mapId }) => mapId as string);
+    const rule = ruleOfStar.get(starId) === 'independent' ? 'independent' : 'deepest';
+    return ready.map(({ surveyId }, i) => {
+      const together: MapsTogether = { mapIds: mapIds.slice(0, i + 1), rule };
+      return { surveyId, together, isFirst: i === 0 };
+    });
+  });
+  const summaries = await summariseTogether(
+    actor.collaborationId,
+    steps.map(({ together }) => together),
+    await currentYardstick(actor.collaborationId),
+    grid,
+  );
+  steps.forEach(({ surveyId, isFirst }, i) => {
+    const profile = summaries[i]?.profile;
+    const before = isFirst ? undefined : summaries[i - 1]?.profile;
     const sum = adds[place.get(surveyId) as number];
-    profile.forEach((value, j) => {
+    profile?.forEach((value, j) => {
       sum[j] += value - (before?.[j] ?? 0);
     });
-  };
-  const ready = [...entriesOf.values()].map((list) =>
-    list.filter(({ target }) => target.mapState === 'ready' && target.mapId !== null),
-  );
-  const alone = ready.flatMap((list) => (list.length === 1 ? list : []));
-  const ids = alone.map(({ target }) => target.mapId as string);
-  const summaries = await summariseMaps(actor.collaborationId, ids, yardstick, grid);
-  for (const { survey, target } of alone) {
-    const summary = summaries.get(target.mapId as string);
-    if (summary) add(survey.id, summary.profile);
-  }
-  for (const list of ready) {
-    if (list.length < 2) continue;
-    const rows = await CompletenessMapRow.findAll({
-      where: { id: list.map(({ target }) => target.mapId as string) },
-    });
-    const maps = list.flatMap(({ target }) => {
-      const row = rows.find(({ id }) => id === target.mapId);
-      return row ? [mapOfRow(row)] : [];
-    });
-    const isIndependent = ruleOfStar.get(list[0].target.starId) === 'independent';
-    const combine = isIndependent ? combineIndependent : combineDeepest;
-    let before: Float64Array | undefined;
-    list.forEach(({ survey }, i) => {
-      const together = i === 0 ? maps[0] : combine(maps.slice(0, i + 1));
-      const profile = profileOf(together, grid, weights);
-      add(survey.id, profile, before);
-      before = profile;
-    });
-  }
-  return { adds, semiMajorAxisAu: grid.semiMajorAxisAu };
-}
-
-function profileOf(map: CompletenessMap, grid: MapGrid, weights: Float64Array): Float64Array {
-  const { completeness } = regridNodes(map, grid).map;
-  const columns = grid.semiMajorAxisAu.length;
-  const profile = new Float64Array(columns);
-  weights.forEach((weight, i) => {
-    for (let j = 0; j < columns; j++) profile[j] += weight * completeness[i * columns + j];
   });
-  return profile;
+  return { adds, semiMajorAxisAu: grid.semiMajorAxisAu };
 }

@@ -6,7 +6,14 @@ import {
   type ShapedPopulation,
 } from '@/lib/population';
 import type { MapSettings } from '@/lib/schemas/surveys';
-import { decodeMap, type MapGrid, regridNodes } from '@/lib/sensitivity';
+import {
+  type CompletenessMap,
+  combineDeepest,
+  combineIndependent,
+  decodeMap,
+  type MapGrid,
+  regridNodes,
+} from '@/lib/sensitivity';
 import { PopulationRow } from '@/models';
 import { type PassingMap, streamMaps } from '@/models/map-stream';
 
@@ -64,12 +71,14 @@ export async function currentYardstick(collaborationId: string): Promise<Yardsti
 }
 
 /** Sees maps through one population, on one grid. */
-function summariser({ population }: Yardstick, grid: MapGrid): (map: PassingMap) => MapSummary {
+function summariser(
+  { population }: Yardstick,
+  grid: MapGrid,
+): (map: CompletenessMap) => MapSummary {
   const weights = populationWeights(grid, population);
   const columns = grid.semiMajorAxisAu.length;
   return (map) => {
-    const completeness = decodeMap(map.encoded);
-    const regridded = regridNodes({ ...map, completeness }, grid).map.completeness;
+    const regridded = regridNodes(map, grid).map.completeness;
     const profile = new Float64Array(columns);
     weights.mass.forEach((weight, i) => {
       if (weight === 0) return;
@@ -81,12 +90,65 @@ function summariser({ population }: Yardstick, grid: MapGrid): (map: PassingMap)
   };
 }
 
+const decoded = ({ massMjup, semiMajorAxisAu, encoded }: PassingMap): CompletenessMap => ({
+  massMjup,
+  semiMajorAxisAu,
+  completeness: decodeMap(encoded),
+});
+
 /** The grid on which a survey's maps are made. */
 export function gridOfSettings({ massMjup: mass, semiMajorAxisAu: axis }: MapSettings): MapGrid {
   return {
     massMjup: logSpacedAxis(mass.min, mass.max, mass.count),
     semiMajorAxisAu: logSpacedAxis(axis.min, axis.max, axis.count),
   };
+}
+
+/** Maps of one star, and how they become one map; a single map stays as it is. */
+export interface MapsTogether {
+  mapIds: readonly string[];
+  rule: 'deepest' | 'independent';
+}
+
+const nameOf = ({ mapIds, rule }: MapsTogether) =>
+  mapIds.length === 1 ? mapIds[0] : `${rule}:${mapIds.join('+')}`;
+
+/**
+ * Summaries of maps that are put together star by star; each group is read and averaged once per
+ * population and grid.
+ *
+ * @returns one for each group, in their order; undefined where a map of it is not stored
+ */
+export async function summariseTogether(
+  collaborationId: string,
+  groups: readonly MapsTogether[],
+  yardstick: Yardstick,
+  grid: MapGrid,
+): Promise<(MapSummary | undefined)[]> {
+  const gridKey = `${grid.massMjup.length}x${grid.semiMajorAxisAu.length}:${grid.semiMajorAxisAu[0]}:${grid.semiMajorAxisAu.at(-1)}:${grid.massMjup[0]}:${grid.massMjup.at(-1)}`;
+  const keyOf = (group: MapsTogether) => `${nameOf(group)}|${yardstick.key}|${gridKey}`;
+  const missing = [...new Map(groups.map((group) => [keyOf(group), group]))].filter(
+    ([key]) => !cache.has(key),
+  );
+  const summarise = missing.length > 0 ? summariser(yardstick, grid) : null;
+  for (let start = 0; start < missing.length; start += READ_AT_ONCE) {
+    const part = missing.slice(start, start + READ_AT_ONCE);
+    const keys = part.flatMap(([, { mapIds }]) => mapIds);
+    const owner = part.flatMap(([, { mapIds }], i) => mapIds.map(() => i));
+    let held: CompletenessMap[] = [];
+    await streamMaps(collaborationId, { by: 'id', keys, gaps: 'skip' }, (map, place) => {
+      if (owner[place] !== owner[place - 1]) held = [];
+      held.push(decoded(map));
+      const [key, { mapIds, rule }] = part[owner[place]];
+      if (held.length < mapIds.length) return;
+      const combine = rule === 'independent' ? combineIndependent : combineDeepest;
+      const summary = summarise?.(held.length === 1 ? held[0] : combine(held));
+      if (summary) cache.set(key, summary);
+    });
+  }
+  const found = groups.map((group) => cache.get(keyOf(group)));
+  while (cache.size > CACHE_SIZE) cache.delete(cache.keys().next().value as string);
+  return found;
 }
 
 /** Summaries of maps by id; each map is read and averaged once per population and grid. */
@@ -96,21 +158,12 @@ export async function summariseMaps(
   yardstick: Yardstick,
   grid: MapGrid,
 ): Promise<Map<string, MapSummary>> {
-  const gridKey = `${grid.massMjup.length}x${grid.semiMajorAxisAu.length}:${grid.semiMajorAxisAu[0]}:${grid.semiMajorAxisAu.at(-1)}:${grid.massMjup[0]}:${grid.massMjup.at(-1)}`;
-  const keyOf = (id: string) => `${id}|${yardstick.key}|${gridKey}`;
-  const missing = [...new Set(mapIds)].filter((id) => !cache.has(keyOf(id)));
-  const summarise = summariser(yardstick, grid);
-  for (let start = 0; start < missing.length; start += READ_AT_ONCE) {
-    const keys = missing.slice(start, start + READ_AT_ONCE);
-    await streamMaps(collaborationId, { by: 'id', keys, gaps: 'skip' }, (map) => {
-      cache.set(keyOf(map.id), summarise(map));
-    });
-  }
+  const alone = mapIds.map((id): MapsTogether => ({ mapIds: [id], rule: 'deepest' }));
+  const summaries = await summariseTogether(collaborationId, alone, yardstick, grid);
   const found = new Map<string, MapSummary>();
-  for (const id of mapIds) {
-    const summary = cache.get(keyOf(id));
+  mapIds.forEach((id, i) => {
+    const summary = summaries[i];
     if (summary) found.set(id, summary);
-  }
-  while (cache.size > CACHE_SIZE) cache.delete(cache.keys().next().value as string);
+  });
   return found;
 }
