@@ -21,12 +21,24 @@ const forms: Record<MomentForm, Intl.DateTimeFormatOptions> = {
   clock: { hour: '2-digit', minute: '2-digit' },
 };
 
+/** Writers by form and zone: making one costs a hundred times what it costs to use it. */
+const writers = new Map<string, Intl.DateTimeFormat>();
+
+function writerFor(form: MomentForm, timeZone: string): Intl.DateTimeFormat {
+  const key = `${form} ${timeZone}`;
+  let writer = writers.get(key);
+  if (!writer) {
+    writer = new Intl.DateTimeFormat('en-GB', { ...forms[form], timeZone });
+    writers.set(key, writer);
+  }
+  return writer;
+}
+
 /** Writes moments in the collaboration's time zone. */
 export function useMoment(): (moment: string | number, form?: MomentForm) => string {
   const timeZone = useTimeZone();
   return useCallback(
-    (moment, form = 'time') =>
-      new Date(moment).toLocaleString('en-GB', { ...forms[form], timeZone }),
+    (moment, form = 'time') => writerFor(form, timeZone).format(new Date(moment)),
     [timeZone],
   );
 }

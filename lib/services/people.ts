@@ -48,18 +48,18 @@ export async function signUp(input: SignUp, address?: string): Promise<Me> {
 /** The person and where they are a member; through a token only the token's collaboration. */
 export async function getMe(person: KnownPerson): Promise<Me> {
   // Read anew: who waited for another change of the same account knows the name from before it.
-  const row = await PersonRow.findByPk(person.personId, { rejectOnEmpty: true });
-  const collaborations = await database().query(
-    `select c.slug, c.name, m.roles
-       from member m join collaboration c on c.id = m.collaboration_id
-      where m.person_id = $1 and m.suspended_at is null and ($2::uuid is null or c.id = $2::uuid)
-      order by c.name, c.slug`,
+  const [me] = await database().query(
+    `select json_build_object('id', p.id, 'name', p.name, 'email', p.email) as person,
+       coalesce((
+         select json_agg(json_build_object('slug', c.slug, 'name', c.name, 'roles', m.roles)
+           order by c.name, c.slug)
+         from member m join collaboration c on c.id = m.collaboration_id
+         where m.person_id = p.id and m.suspended_at is null
+           and ($2::uuid is null or c.id = $2::uuid)), '[]') as collaborations
+     from person p where p.id = $1`,
     { bind: [person.personId, person.tokenCollaborationId ?? null], type: QueryTypes.SELECT },
   );
-  return meSchema.parse({
-    person: { id: row.id, name: row.name, email: row.email },
-    collaborations,
-  });
+  return meSchema.parse(me);
 }
 
 export async function updateMe(person: KnownPerson, input: { name: string }): Promise<Me> {

@@ -101,8 +101,11 @@ export async function getSettings(actor: Actor): Promise<SettingsView> {
 
 /** The time zone of the dates on pages. */
 export async function timeZoneOf(actor: Actor): Promise<string> {
-  const { settings } = await findRow(actor.collaborationId);
-  return (settings as Stored).timeZone ?? USUAL.timeZone;
+  const [row] = await database().query<{ timeZone: string | null }>(
+    `select settings->>'timeZone' as "timeZone" from collaboration where id = $1`,
+    { bind: [actor.collaborationId], type: QueryTypes.SELECT },
+  );
+  return row?.timeZone ?? USUAL.timeZone;
 }
 
 const words: Record<keyof ChangeSettings, string> = {

@@ -37,12 +37,13 @@ export default async function LabLayout({
     currentActor(collaboration),
     requirePerson(`/${collaboration}`),
   ]);
+  const [zone, me] = await Promise.all([timeZoneOf(actor), getMe(person)]);
   const theme = readTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
-    <TimeZoneProvider zone={await timeZoneOf(actor)}>
+    <TimeZoneProvider zone={zone}>
       <SkipLink />
       <LabBar
-        me={await getMe(person)}
+        me={me}
         current={actor.collaboration}
         theme={theme}
         actions={beginnings
