@@ -1,9 +1,17 @@
 import type { Actor } from '@/lib/access/actor';
-import type { DrawnRun, RateAnswer } from '@/lib/schemas/runs';
-import { getRun } from '@/lib/services/runs';
+import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PackedRun } from '@/lib/schemas/packed-run';
+import type { DrawnRun, RateAnswer, RunSummary, RunView } from '@/lib/schemas/runs';
+import { findRun, findRunRecord } from '@/lib/services/runs';
 
 /** Digits of what a page draws: as many as exports carry, and a third of what was computed. */
 const DIGITS = 6;
+/** Of a SHA-256: so many tell the maps of two runs apart. */
+const DIGEST_CHARACTERS = 16;
+/** Characters of finished runs that are kept, some hundred runs of 500 stars. */
+const MOST_KEPT = 24_000_000;
+
+type Drawn = Pick<PackedRun, 'drawn' | 'populationId'>;
 
 const round = (value: number) => Number(value.toPrecision(DIGITS));
 const roundAll = (values: number[]) => values.map(round);
@@ -20,18 +28,22 @@ function roundCurve(answer: RateAnswer): RateAnswer {
 }
 
 /**
- * A run for a page: its curves, its mean map and the shares of its stars to six digits. Limits,
- * intervals and the nodes of the grid stay as they were computed. What no page draws stays behind.
+ * What a page draws of a run: its curves, its mean map and the shares of its stars to six digits.
+ * Limits, intervals and the nodes of the grid stay as they were computed. What no page draws stays
+ * behind.
  */
-export async function drawnRun(actor: Actor, id: string): Promise<DrawnRun> {
-  const run = await getRun(actor, id);
-  const { inputs, result } = run;
-  if (!inputs || !result) return run;
+function asDrawn({
+  inputs,
+  result,
+}: Pick<RunView, 'inputs' | 'result'>): Pick<DrawnRun, 'inputs' | 'result'> {
+  if (!inputs || !result) return { inputs, result };
   return {
-    ...run,
     inputs: {
       ...inputs,
-      stars: inputs.stars.map(({ mapId: _row, mapChecksum: _bytes, ...star }) => star),
+      stars: inputs.stars.map(({ mapId: _row, mapChecksum: _bytes, mapDigest, ...star }) => ({
+        ...star,
+        mapDigest: mapDigest.slice(0, DIGEST_CHARACTERS),
+      })),
     },
     result: {
       ...result,
@@ -48,4 +60,46 @@ export async function drawnRun(actor: Actor, id: string): Promise<DrawnRun> {
       })),
     },
   };
+}
+
+/** By fingerprints of inputs and result: what a finished run holds never changes. */
+const kept = new Map<string, Drawn>();
+let keptCharacters = 0;
+
+function keep(key: string, packed: Drawn): void {
+  if (kept.has(key)) return;
+  kept.set(key, packed);
+  keptCharacters += packed.drawn.length;
+  for (const [oldest, { drawn }] of kept) {
+    if (keptCharacters <= MOST_KEPT) return;
+    kept.delete(oldest);
+    keptCharacters -= drawn.length;
+  }
+}
+
+async function readDrawn(actor: Actor, id: string): Promise<Drawn> {
+  const { inputs, result } = await findRun(actor, id);
+  const populationId = inputs?.population.id ?? null;
+  return { drawn: JSON.stringify(asDrawn({ inputs, result })), populationId };
+}
+
+/**
+ * A run for a page.
+ *
+ * @param analysis of the run, as the actor may read it
+ * @throws NotFound for a run that this collaboration does not have
+ */
+export async function drawnRun(
+  actor: Actor,
+  { id, key, name }: Pick<AnalysisView, 'id' | 'key' | 'name'>,
+  summary: RunSummary,
+): Promise<PackedRun> {
+  const facts = await findRunRecord(actor, summary.id);
+  const run = { ...summary, analysis: { id, key, name }, ...facts };
+  const place = `${run.id} ${run.inputsDigest} ${run.resultDigest}`;
+  const before = kept.get(place);
+  if (before) return { ...run, ...before };
+  const packed = await readDrawn(actor, run.id);
+  if (run.inputsDigest !== null && run.resultDigest !== null) keep(place, packed);
+  return { ...run, ...packed };
 }

@@ -7,15 +7,16 @@ import { createAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { useCompanionsOf } from '@/components/hooks/use-surveys';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { TextField } from '@/components/ui/text-field';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { CombinationView } from '@/lib/schemas/combinations';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SurveyList } from '@/lib/schemas/surveys';
 import { CandidateChoice } from './candidate-choice';
 import { CombinationChoice } from './combination-choice';
@@ -34,7 +35,7 @@ interface NewAnalysisProps {
   surveys: SurveyList;
   populations: ListedPopulation[];
   /** Newest finished run: its maps give the estimate. */
-  previewRun: DrawnRun | null;
+  previewRun: PackedRun | null;
   /** Population asked for in the address. */
   wanted?: string;
   /** Stored combination asked for in the address. */
@@ -52,7 +53,8 @@ const FIRST_RATE: Omit<RateSetting, 'credibleLevel'> = {
 
 /** One page, four choices with sensible defaults, and what they would give. */
 export function NewAnalysis(props: NewAnalysisProps) {
-  const { collaboration, surveys, populations, previewRun, wanted, stored, usual } = props;
+  const { collaboration, surveys, populations, wanted, stored, usual } = props;
+  const previewRun = useUnpackedRun(props.previewRun);
   const router = useRouter();
   const offered = surveys.surveys.filter((survey) => !survey.isArchived);
   const ready = offered.filter((survey) => survey.maps.ready > 0);

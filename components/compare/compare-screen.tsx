@@ -29,11 +29,13 @@ interface CompareScreenProps {
 
 /** Two to six runs on one axis: their limits, and what differs between them. */
 export function CompareScreen({ collaboration, choices, sides }: CompareScreenProps) {
-  const known = useMemo(
-    () => sides.flatMap((side) => comparedRun(side) ?? []).map(withLetter),
-    [sides],
-  );
-  const missing = sides.filter((side) => comparedRun(side) === undefined);
+  const [known, missing] = useMemo(() => {
+    const runs = sides.map((side) => comparedRun(side));
+    return [
+      runs.flatMap((run) => run ?? []).map(withLetter),
+      sides.filter((_side, i) => runs[i] === undefined),
+    ];
+  }, [sides]);
   const isReady = known.length >= 2;
   return (
     <>

@@ -1,7 +1,7 @@
 import { recipeOfRun } from '@/components/runs/run-recipe';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import { type PackedRun, unpackRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SideAddress } from './address';
 import { type ComparedRun, withoutDetections } from './differences';
 
@@ -9,13 +9,14 @@ export interface CompareSide {
   address: SideAddress;
   analysis: AnalysisView | null;
   /** The run that was asked for, with its result; null where there is none. */
-  run: DrawnRun | null;
+  run: PackedRun | null;
   population: ListedPopulation | null;
 }
 
 /** A side with everything that is compared; undefined where it has no finished run. */
 export function comparedRun(side: CompareSide): Omit<ComparedRun, 'letter'> | undefined {
-  const { address, analysis, run, population } = side;
+  const { address, analysis, population } = side;
+  const run = side.run && unpackRun(side.run);
   const recipe = recipeOfRun(run);
   if (!analysis || !run?.inputs || !run.result || !population || !recipe) return undefined;
   const name = `${address.key}${address.run === undefined ? '' : `, run ${address.run}`}`;

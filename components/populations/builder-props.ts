@@ -1,6 +1,6 @@
 import type { Query } from '@/components/runs/live-setting';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { AskedSetting } from './asked-setting';
 
 export interface PopulationBuilderProps {
@@ -10,7 +10,7 @@ export interface PopulationBuilderProps {
   /** The version that is shown. */
   version?: ListedPopulation;
   /** Newest finished run: its maps carry the preview. */
-  previewRun: DrawnRun | null;
+  previewRun: PackedRun | null;
   canShare: boolean;
   query: Query;
   /** What the address asks for. */

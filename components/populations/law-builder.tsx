@@ -3,6 +3,7 @@
 import dynamic from 'next/dynamic';
 import { type ReactNode, useDeferredValue, useMemo, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { orNull } from '@/components/runs/or-null';
 import { profileAlong } from '@/components/runs/survey-sums';
 import { Button } from '@/components/ui/button';
@@ -52,7 +53,8 @@ const noGrid = DEFAULT_GRID();
 
 /** Laws under their controls, and at once what the surveys would see of them. */
 export function LawBuilder(props: LawBuilderProps) {
-  const { collaboration, versions, version, previewRun, canShare, query, start, choice } = props;
+  const { collaboration, versions, version, canShare, query, start, choice } = props;
+  const previewRun = useUnpackedRun(props.previewRun);
   const saved = useMemo(() => defaultSetting(start), [start]);
   const [setting, setSetting] = useState(props.asked.laws ?? saved);
   const [settled, setSettled] = useState(setting);

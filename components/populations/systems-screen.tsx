@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import type { Query } from '@/components/runs/live-setting';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -10,8 +11,8 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import type { SystemsSummary } from '@/lib/population';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import { DEFAULT_GRID } from '@/lib/sensitivity';
 import { AgainstVersion } from './against-version';
 import type { AskedSetting } from './asked-setting';
@@ -31,7 +32,7 @@ interface SystemsScreenProps {
   versions: ListedPopulation[];
   version: ListedPopulation;
   summary: SystemsSummary;
-  previewRun: DrawnRun | null;
+  previewRun: PackedRun | null;
   query: Query;
   /** What the address asks for. */
   asked: AskedSetting;
@@ -42,7 +43,8 @@ const conventions = { mass: 'linear', semiMajorAxis: 'linear' } as const;
 
 /** Systems from a table: what they are, what the surveys would see of them, what a run asks. */
 export function SystemsScreen(props: SystemsScreenProps) {
-  const { collaboration, versions, version, summary, previewRun, query } = props;
+  const { collaboration, versions, version, summary, query } = props;
+  const previewRun = useUnpackedRun(props.previewRun);
   const { definition, fault } = useWholeDefinition(collaboration, version);
   const { preview, reason, isFetchingMasses } = usePreview(collaboration, previewRun, false);
   const [setting, setSetting] = useState(props.asked.preview);

@@ -6,8 +6,10 @@ import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { PageTitle } from '@/components/ui/page-title';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation, PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
@@ -30,7 +32,7 @@ interface ResultScreenProps {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run, with its result. */
-  run: DrawnRun | null;
+  run: PackedRun | null;
   /** The population that this run used. */
   runPopulation: ListedPopulation | null;
   /** What the address asks for; undefined where the population has no live controls. */
@@ -48,7 +50,8 @@ export function ResultScreen(props: ResultScreenProps) {
     props.analysis,
   );
   const finished = analysis.runs.find(isFinished);
-  const { data: run = props.run } = useRun(collaboration, finished?.id, props.run ?? undefined);
+  const first = useUnpackedRun(props.run);
+  const { data: run = first } = useRun(collaboration, finished?.id, first ?? undefined);
   const inRun = useRunDefinition(collaboration, analysis, run, runPopulation);
   const onChanged = useCallback(() => {
     void mutate();

@@ -5,6 +5,7 @@ import { FigureFrame } from '@/components/figures/figure-frame';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { askStudy, useStudiesOfKind, useStudy } from '@/components/hooks/use-studies';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
@@ -12,8 +13,8 @@ import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudySummary, StudyView } from '@/lib/schemas/studies';
 import type { SettingsOf, StudyKind } from '@/lib/schemas/study-settings';
 import { AnswerExports } from './answer-exports';
@@ -30,7 +31,7 @@ export interface StudyPageProps<Kind extends StudyKind> {
   collaboration: string;
   analysis: AnalysisView;
   /** Newest finished run; null while there is none. */
-  run: DrawnRun | null;
+  run: PackedRun | null;
   runPopulation: ListedPopulation | null;
   /** The answer that the address names. */
   answerId?: string;
@@ -43,7 +44,8 @@ const cannotAsk =
 
 /** One kind of further question: its settings, its job, its answers and what they rest on. */
 export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
-  const { kind, collaboration, analysis, run, runPopulation, first } = props;
+  const { kind, collaboration, analysis, runPopulation, first } = props;
+  const run = useUnpackedRun(props.run);
   const entry = kinds[kind];
   const [chosenId, setChosenId] = useState(props.answerId);
   const [isBusy, setBusy] = useState(false);

@@ -61,6 +61,21 @@ export async function findRun(actor: Actor, id: string): Promise<RunRow> {
   return run;
 }
 
+/** What is told of a run beside its summary, without what it rests on and what came out. */
+export async function findRunRecord(
+  actor: Actor,
+  id: string,
+): Promise<Pick<RunView, 'recipe' | 'seed' | 'engineVersion' | 'inputsDigest'>> {
+  demand(actor, 'read');
+  const run = await RunRow.findOne({
+    attributes: ['recipe', 'seed', 'engineVersion', 'inputsDigest'],
+    where: { id, collaborationId: actor.collaborationId },
+    raw: true,
+  });
+  if (!run) throw new NotFound('run');
+  return run;
+}
+
 export async function getRun(actor: Actor, id: string): Promise<RunView> {
   const run = await findRun(actor, id);
   const analysis = await AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true });

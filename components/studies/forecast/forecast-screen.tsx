@@ -4,13 +4,14 @@ import { useRouter } from 'next/navigation';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudy } from '@/components/hooks/use-studies';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { StudyView } from '@/lib/schemas/studies';
 import { AnswerExports } from '../answer-exports';
 import { answerFigures } from '../answer-files';
@@ -25,14 +26,15 @@ interface ForecastScreenProps {
   study: StudyView;
   analysis: AnalysisView;
   /** Newest finished run of the analysis; the forecast may rest on an earlier one. */
-  run: DrawnRun | null;
+  run: PackedRun | null;
   runPopulation: ListedPopulation | null;
   canAsk: boolean;
 }
 
 /** One forecast: its job while it is computed, then its answer and what that rests on. */
 export function ForecastScreen(props: ForecastScreenProps) {
-  const { collaboration, analysis, run, runPopulation, canAsk } = props;
+  const { collaboration, analysis, runPopulation, canAsk } = props;
+  const run = useUnpackedRun(props.run);
   const router = useRouter();
   const { data: study = props.study, error, mutate } = useStudy(collaboration, props.study.id);
   const answered = useAnsweredRun({ collaboration, analysis, run, runPopulation, study });

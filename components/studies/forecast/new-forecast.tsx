@@ -7,6 +7,7 @@ import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import { askStudy } from '@/components/hooks/use-studies';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
 import { isFinished } from '@/components/runs/run-standing';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
@@ -16,8 +17,8 @@ import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';
 import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import type { DrawnRun } from '@/lib/schemas/runs';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
 import { askedRun } from '../answered-run';
 
@@ -34,7 +35,7 @@ interface NewForecastProps {
   /** Analyses with a finished run. */
   bases: AnalysisView[];
   /** The one to start from, with its run; null without bases. */
-  first: { key: string; run: DrawnRun; population: ListedPopulation | null } | null;
+  first: { key: string; run: PackedRun; population: ListedPopulation | null } | null;
   /** An earlier forecast whose settings are taken over. */
   start?: SettingsOf<'forecast'>;
   /** Why this person cannot ask. */
@@ -49,10 +50,11 @@ export function NewForecast(props: NewForecastProps) {
   const [isBusy, setBusy] = useState(false);
   const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
   const analysis = bases.find((one) => one.key === key);
+  const firstRun = useUnpackedRun(first?.run ?? null);
   const { data: run, error } = useRun(
     collaboration,
     analysis?.runs.find(isFinished)?.id,
-    first?.run,
+    firstRun ?? undefined,
   );
   const { data: populations } = usePopulations(
     collaboration,

@@ -27,10 +27,14 @@ export default async function ComparePage({
       const run = finished?.find(
         ({ number }) => address.run === undefined || number === address.run,
       );
-      return { address, analysis, run: run ? await drawnRun(actor, run.id) : null };
+      return {
+        address,
+        analysis,
+        run: analysis && run ? await drawnRun(actor, analysis, run) : null,
+      };
     }),
   );
-  const used = sides.flatMap(({ run }) => run?.inputs?.population.id ?? []);
+  const used = sides.flatMap(({ run }) => run?.populationId ?? []);
   const populations = await findPopulationsById(actor, used);
   const choices = analyses.flatMap(({ key, name, runs }) =>
     runs.filter(isFinished).map(({ number }, index) => ({
@@ -45,7 +49,7 @@ export default async function ComparePage({
       choices={choices}
       sides={sides.map((side) => ({
         ...side,
-        population: populations.get(side.run?.inputs?.population.id ?? '') ?? null,
+        population: populations.get(side.run?.populationId ?? '') ?? null,
       }))}
     />
   );
