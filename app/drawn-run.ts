@@ -1,5 +1,6 @@
 import type { Actor } from '@/lib/access/actor';
 import type { AnalysisView } from '@/lib/schemas/analyses';
+import { pack } from '@/lib/schemas/packed';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { DrawnRun, RateAnswer, RunSummary, RunView } from '@/lib/schemas/runs';
 import { findRun, findRunRecord } from '@/lib/services/runs';
@@ -80,7 +81,7 @@ function keep(key: string, packed: Drawn): void {
 async function readDrawn(actor: Actor, id: string): Promise<Drawn> {
   const { inputs, result } = await findRun(actor, id);
   const populationId = inputs?.population.id ?? null;
-  return { drawn: JSON.stringify(asDrawn({ inputs, result })), populationId };
+  return { drawn: pack(asDrawn({ inputs, result })), populationId };
 }
 
 /**

@@ -7,7 +7,7 @@ import { createAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { useCompanionsOf } from '@/components/hooks/use-surveys';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';

@@ -3,7 +3,7 @@
 import dynamic from 'next/dynamic';
 import { type ReactNode, useDeferredValue, useMemo, useState } from 'react';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { orNull } from '@/components/runs/or-null';
 import { profileAlong } from '@/components/runs/survey-sums';
 import { Button } from '@/components/ui/button';

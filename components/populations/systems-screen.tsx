@@ -3,7 +3,7 @@
 import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import type { Query } from '@/components/runs/live-setting';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';

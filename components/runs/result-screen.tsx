@@ -6,7 +6,7 @@ import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { useAnalysis } from '@/components/hooks/use-analyses';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { PageTitle } from '@/components/ui/page-title';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { PackedRun } from '@/lib/schemas/packed-run';

@@ -2,9 +2,11 @@
 
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAllStars } from '@/components/hooks/use-stars';
+import { useUnpacked } from '@/components/hooks/use-unpacked';
 import { EmptyState } from '@/components/ui/empty-state';
 import { Notice } from '@/components/ui/notice';
 import { TextAction } from '@/components/ui/text-action';
+import type { Packed } from '@/lib/schemas/packed';
 import type { StarList } from '@/lib/schemas/stars';
 import { StarTable } from './star-table';
 import { StarTabs } from './star-tabs';
@@ -12,12 +14,13 @@ import { StarTabs } from './star-tabs';
 interface StarsScreenProps {
   collaboration: string;
   /** The first of them; the others follow. */
-  initial: StarList;
+  initial: Packed<StarList>;
   surveys: { slug: string; name: string }[];
 }
 
 /** Every star of the collaboration once: search, filters and their count. */
-export function StarsScreen({ collaboration, initial, surveys }: StarsScreenProps) {
+export function StarsScreen({ collaboration, initial: packed, surveys }: StarsScreenProps) {
+  const initial = useUnpacked(packed);
   const { data: list = initial, error, mutate } = useAllStars(collaboration, initial);
   const { counts, total, stars } = list;
   if (counts.stars === 0) {

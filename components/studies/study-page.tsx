@@ -5,7 +5,7 @@ import { FigureFrame } from '@/components/figures/figure-frame';
 import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { askStudy, useStudiesOfKind, useStudy } from '@/components/hooks/use-studies';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';

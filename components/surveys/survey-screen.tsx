@@ -5,6 +5,7 @@ import { useRef, useState } from 'react';
 import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
+import { useUnpacked } from '@/components/hooks/use-unpacked';
 import { SharedNotice } from '@/components/sharing/shared-notice';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
@@ -14,6 +15,7 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { Tabs } from '@/components/ui/tabs';
 import { TextAction } from '@/components/ui/text-action';
+import type { Packed } from '@/lib/schemas/packed';
 import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { Shares } from '@/lib/schemas/sharing';
 import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
@@ -35,7 +37,7 @@ import {
 interface SurveyScreenProps {
   collaboration: string;
   survey: SurveyView;
-  targets: TargetList;
+  targets: Packed<TargetList>;
   companions: CompanionView[];
   uploads: UploadView[];
   shares: Shares;
@@ -86,10 +88,11 @@ export function SurveyScreen(props: SurveyScreenProps) {
     props.survey,
   );
   const isOpen = survey.mapJob?.status === 'running' || survey.mapJob?.status === 'waiting';
-  const { data: list = props.targets, mutate: mutateTargets } = useTargets(
+  const firstTargets = useUnpacked(props.targets);
+  const { data: list = firstTargets, mutate: mutateTargets } = useTargets(
     collaboration,
     survey.slug,
-    props.targets,
+    firstTargets,
     { isLive: isOpen, stamp: `${survey.maps.ready}-${survey.maps.failed}` },
   );
   const { data: companions = props.companions } = useCompanions(

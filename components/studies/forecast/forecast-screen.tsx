@@ -4,7 +4,7 @@ import { useRouter } from 'next/navigation';
 import { FigureFrame } from '@/components/figures/figure-frame';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useStudy } from '@/components/hooks/use-studies';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';

@@ -7,7 +7,7 @@ import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import { askStudy } from '@/components/hooks/use-studies';
-import { useUnpackedRun } from '@/components/hooks/use-unpacked-run';
+import { useUnpackedRun } from '@/components/hooks/use-unpacked';
 import { isFinished } from '@/components/runs/run-standing';
 import { EmptyState } from '@/components/ui/empty-state';
 import { LinkButton } from '@/components/ui/link-button';

@@ -3,6 +3,7 @@ import { currentActor } from '@/app/session';
 import { ExportButton } from '@/components/exports/export-button';
 import { StarsScreen } from '@/components/stars/stars-screen';
 import { PageTitle } from '@/components/ui/page-title';
+import { pack } from '@/lib/schemas/packed';
 import { listStars } from '@/lib/services/stars';
 import { listSurveys } from '@/lib/services/surveys';
 
@@ -36,7 +37,7 @@ export default async function StarsPage({
           )
         }
       />
-      <StarsScreen collaboration={actor.collaboration} initial={stars} surveys={surveys} />
+      <StarsScreen collaboration={actor.collaboration} initial={pack(stars)} surveys={surveys} />
     </>
   );
 }

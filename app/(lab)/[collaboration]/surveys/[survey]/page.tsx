@@ -4,6 +4,7 @@ import { NotesOf } from '@/app/(lab)/[collaboration]/notes-of';
 import { currentActor } from '@/app/session';
 import { SurveyScreen } from '@/components/surveys/survey-screen';
 import { NotFound } from '@/lib/errors';
+import { pack } from '@/lib/schemas/packed';
 import { nameCooling } from '@/lib/services/cooling-tables';
 import { listShares } from '@/lib/services/sharing/shares';
 import { currentYardstick } from '@/lib/services/survey-depth';
@@ -36,7 +37,7 @@ export default async function SurveyPage({
         <SurveyScreen
           collaboration={actor.collaboration}
           survey={survey}
-          targets={targets}
+          targets={pack(targets)}
           companions={companions}
           uploads={uploads}
           shares={shares}
