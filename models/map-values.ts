@@ -23,13 +23,23 @@ export function ownBytes(encoded: Uint16Array): Buffer {
   return isBigEndian ? bytes.swap16() : bytes;
 }
 
+interface PackedMap {
+  nodeValues: Buffer;
+  checksum: string;
+}
+
 /**
  * A map as it lies in the table: uint16 = round(65535 C), little-endian, row-major.
  *
  * @param completeness shape [mass, semiMajorAxis], row-major, 0 to 1, not modified
  */
-export function packMap(completeness: Float64Array): { nodeValues: Buffer; checksum: string } {
-  const nodeValues = ownBytes(encodeMap(completeness));
+export function packMap(completeness: Float64Array): PackedMap {
+  return packEncoded(encodeMap(completeness));
+}
+
+/** @param encoded shape [mass, semiMajorAxis], round(65535 C), which nobody reads afterwards */
+export function packEncoded(encoded: Uint16Array): PackedMap {
+  const nodeValues = ownBytes(encoded);
   return { nodeValues, checksum: createHash('sha256').update(nodeValues).digest('hex') };
 }
 

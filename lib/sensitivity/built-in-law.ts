@@ -1,3 +1,4 @@
+import { isSameAxis } from '@/lib/numerics/grid';
 import {
   BOLTZMANN_CONSTANT,
   GM_JUPITER,
@@ -203,10 +204,15 @@ export function massesOutsideValidity(
     requireLawRange(BUILT_IN_LAW_RANGE.massMinMjup, age);
     return (REFERENCE_AGE_MYR / age) ** AGE_POWER;
   });
+  const bodies = referenceBodies(massMjup);
   const outside: number[] = [];
-  referenceBodies(massMjup).forEach(({ teffK }, i) => {
-    if (!cooling.every((factor) => isTrusted(massMjup[i], teffK * factor))) outside.push(i);
-  });
+  for (let i = 0; i < bodies.length; i++) {
+    for (let k = 0; k < cooling.length; k++) {
+      if (isTrusted(massMjup[i], bodies[i].teffK * cooling[k])) continue;
+      outside.push(i);
+      break;
+    }
+  }
   return outside;
 }
 
@@ -214,9 +220,7 @@ let kept: { massMjup: Float64Array; bodies: CooledBody[] } | null = null;
 
 /** The masses at the law's reference age; kept, because every star of a survey asks for the same. */
 function referenceBodies(massMjup: Float64Array): CooledBody[] {
-  const isKept =
-    kept?.massMjup.length === massMjup.length && kept.massMjup.every((m, i) => m === massMjup[i]);
-  if (kept && isKept) return kept.bodies;
+  if (kept && isSameAxis(kept.massMjup, massMjup)) return kept.bodies;
   const bodies = Array.from(massMjup, (mass) => cooledBody(mass, REFERENCE_AGE_MYR));
   kept = { massMjup: massMjup.slice(), bodies };
   return bodies;

@@ -4,9 +4,10 @@ import { splitAge } from './age-split';
 import { coolNodes } from './cooling';
 import { coolingPaths } from './cooling-paths';
 import { directIntegral } from './direct-integral';
+import { encodeMap } from './encoding';
 import { ageUnder } from './field-age';
-import { levelMap } from './level-map';
-import type { SingleAges } from './magnitude-weights';
+import { encodedLevelMap, levelMap } from './level-map';
+import type { SingleAges, WeightInputs } from './magnitude-weights';
 import { requireGrid } from './map-grid';
 import { exactRows } from './separation-rows';
 import { type PreparedStar, prepareStar } from './star-model';
@@ -21,7 +22,7 @@ import type {
 import { removeUnstableNodes } from './unstable-zone';
 
 /** Changes whenever the same inputs would give other numbers, so that stored maps are not reused. */
-export const ENGINE_VERSION: string = '4';
+export const ENGINE_VERSION: string = '5';
 
 /**
  * Completeness of one star, P(detected | companion of mass m and semi-major axis a), without random
@@ -30,7 +31,7 @@ export const ENGINE_VERSION: string = '4';
  * C(m, a) = E ∫ c(θ) p(θ; M(m, t) + μ(d) + A - m_star) dF(θ d / a) over age t and distance d, F
  * the projected separation's distribution. One curve takes the product of weights, exact in age, and
  * rows of cells of magnitude; several curves of one position, and single ages under a hard
- * threshold, the sum over separation. Distances are three nodes.
+ * threshold, the sum over separation. Distances are three nodes, fewer where a smooth threshold hides the error.
  *
  * An age law's tails beyond the cooling relation take its nearest age; whether the star is refused
  * there is told by its age nodes, which leave out 2 % (smooth) or 0.6 % (hard) at each end.
@@ -54,13 +55,8 @@ export function computeCompletenessMap(
   grid: MapGrid,
   settings: SensitivitySettings,
 ): { map: CompletenessMap; report: CoolingReport } {
-  requireGrid(grid);
-  const isByLevels = usesLevels(star, settings);
-  const prepared = prepareStar(star, cooling, grid.massMjup, settings, !isByLevels);
-  const logAxis = logAxisOf(grid);
-  const completeness = isByLevels
-    ? integrateByLevels(star, prepared, cooling, grid.massMjup, logAxis, settings)
-    : cutToChances(direct(prepared, grid.massMjup.length, logAxis, settings));
+  const { prepared, parts, logAxis } = prepare(star, cooling, grid, settings);
+  const completeness = valuesOf(prepared, parts, logAxis, settings);
   const removed = removeUnstableNodes(completeness, grid, star, settings);
   return {
     map: {
@@ -68,11 +64,68 @@ export function computeCompletenessMap(
       semiMajorAxisAu: grid.semiMajorAxisAu.slice(),
       completeness,
     },
-    report: {
-      ...prepared.report,
-      ...(removed !== null && { nodesRemovedByStellarCompanion: removed }),
-    },
+    report: reportOf(prepared, removed),
   };
+}
+
+/**
+ * The same map as it is stored: encodeMap of computeCompletenessMap, and faster than the two.
+ *
+ * @returns shape [mass, semiMajorAxis] of the grid, row-major, 0 to 65535; and the same report
+ * @throws as computeCompletenessMap
+ */
+export function computeEncodedMap(
+  star: StarInputs,
+  cooling: CoolingRelation,
+  grid: MapGrid,
+  settings: SensitivitySettings,
+): { encoded: Uint16Array; report: CoolingReport } {
+  const { prepared, parts, logAxis } = prepare(star, cooling, grid, settings);
+  const { weights, besides } = parts;
+  const isPlain = weights !== null && besides === null;
+  const encoded =
+    (isPlain && encodedLevelMap(prepared, weights, settings.eccentricity, logAxis)) ||
+    encodeMap(valuesOf(prepared, parts, logAxis, settings));
+  const removed = removeUnstableNodes(encoded, grid, star, settings);
+  return { encoded, report: reportOf(prepared, removed) };
+}
+
+function reportOf({ report }: PreparedStar, removed: number | null): CoolingReport {
+  return { ...report, ...(removed !== null && { nodesRemovedByStellarCompanion: removed }) };
+}
+
+/** What a map is made of: a product of weights and rows, what is summed over separation, or both. */
+interface Parts {
+  weights: WeightInputs | null;
+  /** Shape [mass, semiMajorAxis]. */
+  besides: Float64Array | null;
+}
+
+function prepare(
+  star: StarInputs,
+  cooling: CoolingRelation,
+  grid: MapGrid,
+  settings: SensitivitySettings,
+): { prepared: PreparedStar; parts: Parts; logAxis: Float64Array } {
+  requireGrid(grid);
+  const isByLevels = usesLevels(star, settings);
+  const prepared = prepareStar(star, cooling, grid.massMjup, settings, !isByLevels);
+  const logAxis = logAxisOf(grid);
+  const parts = isByLevels
+    ? partsByLevels(star, prepared, cooling, grid.massMjup, logAxis, settings)
+    : { weights: null, besides: direct(prepared, grid.massMjup.length, logAxis, settings) };
+  return { prepared, parts, logAxis };
+}
+
+function valuesOf(
+  prepared: PreparedStar,
+  { weights, besides }: Parts,
+  logAxis: Float64Array,
+  { eccentricity }: SensitivitySettings,
+): Float64Array {
+  return weights
+    ? levelMap(prepared, weights, eccentricity, logAxis, besides)
+    : cutToChances(besides as Float64Array);
 }
 
 let lastAxis: { axisAu: Float64Array; logAxis: Float64Array } | null = null;
@@ -117,15 +170,15 @@ const NO_SINGLE_AGES: SingleAges = {
 };
 
 /** What is seen over stretches of age and at single ages, which a hard rule sums over separation. */
-function integrateByLevels(
+function partsByLevels(
   star: StarInputs,
   prepared: PreparedStar,
   cooling: CoolingRelation,
   massMjup: Float64Array,
   logAxis: Float64Array,
   settings: SensitivitySettings,
-): Float64Array {
-  const { eccentricity, threshold, massOutsideTable } = settings;
+): Parts {
+  const { threshold, massOutsideTable } = settings;
   const [curve] = prepared.curves;
   const { nSigma } = curve;
   const { band } = star.curves[0];
@@ -145,11 +198,11 @@ function integrateByLevels(
           settings,
         )
       : null;
-  if (ofSingle && age.sides.length === 0) return cutToChances(ofSingle);
+  if (ofSingle && age.sides.length === 0) return { weights: null, besides: ofSingle };
   const paths = coolingPaths(cooling, band, massMjup, massOutsideTable, age.cellMag);
-  const inputs = { paths, sides: age.sides, single, threshold, nSigma };
-  if (isHard) inputs.single = NO_SINGLE_AGES;
-  return levelMap(prepared, inputs, eccentricity, logAxis, ofSingle);
+  const weights = { paths, sides: age.sides, single, threshold, nSigma };
+  if (isHard) weights.single = NO_SINGLE_AGES;
+  return { weights, besides: ofSingle };
 }
 
 function singleAges(

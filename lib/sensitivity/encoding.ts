@@ -2,7 +2,7 @@
 const FULL_SCALE = 65_535;
 
 /**
- * Completeness as it is stored: round(65535 C).
+ * Completeness as it is stored: round(65535 C), half up.
  *
  * @param completeness any shape, [fraction], 0 to 1, not modified
  * @returns same length and order, 0 to 65535
@@ -17,7 +17,7 @@ export function encodeMap(completeness: Float64Array): Uint16Array {
     if (!(c >= 0 && c <= 1)) {
       throw new RangeError(`completeness[${i}] must be between 0 and 1, got ${c}`);
     }
-    values[i] = Math.round(FULL_SCALE * c);
+    values[i] = Math.floor(FULL_SCALE * c + 0.5);
   }
   return values;
 }

@@ -17,7 +17,7 @@ export {
   combineDeepest,
   combineIndependent,
 } from './combine';
-export { computeCompletenessMap, ENGINE_VERSION } from './completeness';
+export { computeCompletenessMap, computeEncodedMap, ENGINE_VERSION } from './completeness';
 export { checkContrastCurve, contrastAt, detectionProbability } from './contrast';
 export { AgeOutsideTableError, ageRange, coolingName } from './cooling';
 export { checkCoolingTable, type FainterWhenHeavier, tableLookup } from './cooling-table';

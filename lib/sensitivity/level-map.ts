@@ -23,6 +23,8 @@ const BLOCK = 8;
 const DISTANCE_DOUBLES = 3;
 /** Kinds of rows that are added to, see addLevelMeans. */
 const ROW_KINDS = 3;
+/** Stored values in the place of a double. */
+const SHORTS_PER_DOUBLE = 4;
 
 interface Workplace {
   kernels: Kernels;
@@ -37,6 +39,15 @@ function workplaceHere(): Workplace {
   const kernels = compiledKernels() ?? plainKernels;
   workplace = { kernels, shelve: newShelf(kernels) };
   return workplace;
+}
+
+/** Where a product lies in the kernels' memory: rows `stride` apart, from the first that is reached. */
+interface Product {
+  kernels: Kernels;
+  memory: Float64Array;
+  out: number;
+  stride: number;
+  firstColumn: number;
 }
 
 /**
@@ -56,6 +67,42 @@ export function levelMap(
   logAxis: Float64Array,
   besides: Float64Array | null,
 ): Float64Array {
+  const { kernels, memory, out, stride, firstColumn } = multiply(star, inputs, law, logAxis);
+  const { masses } = inputs.paths;
+  const columns = logAxis.length;
+  kernels.pressRows(out, masses, columns, stride, firstColumn);
+  const size = masses * columns;
+  if (besides) for (let i = 0; i < size; i++) memory[out + i] += besides[i];
+  kernels.clip(out, size);
+  return memory.slice(out, out + size);
+}
+
+/**
+ * The same as it is stored, see encodeMap, without the numbers in between.
+ *
+ * @returns shape [mass, semiMajorAxis], row-major, 0 to 65535; null where one is no number
+ */
+export function encodedLevelMap(
+  star: PreparedStar,
+  inputs: WeightInputs,
+  law: EccentricityLaw,
+  logAxis: Float64Array,
+): Uint16Array | null {
+  const { kernels, memory, out, stride, firstColumn } = multiply(star, inputs, law, logAxis);
+  const { masses } = inputs.paths;
+  const columns = logAxis.length;
+  const at = SHORTS_PER_DOUBLE * (out + (masses + 1) * stride);
+  const areNumbers = kernels.encodeRows(at, out, masses, columns, stride, firstColumn);
+  if (areNumbers === 0) return null;
+  return new Uint16Array(memory.buffer, 2 * at, masses * columns).slice();
+}
+
+function multiply(
+  star: PreparedStar,
+  inputs: WeightInputs,
+  law: EccentricityLaw,
+  logAxis: Float64Array,
+): Product {
   const { kernels, shelve } = workplaceHere();
   const columns = logAxis.length;
   const { cellMag, masses } = inputs.paths;
@@ -82,7 +129,8 @@ export function levelMap(
   const scratch = bands + 2 * masses;
   const scratchDoubles = weightScratch(inputs, range.count);
   const out = scratch + scratchDoubles + ((scratch + scratchDoubles) & 1);
-  const memory = kernels.reserve(out + (masses + 1) * stride);
+  const encoded = Math.ceil((masses * columns) / SHORTS_PER_DOUBLE);
+  const memory = kernels.reserve(out + (masses + 1) * stride + encoded);
   const distances = placeStar(memory, star0, star, curve);
   if (lawRows.phases) setPhases(kernels, lawRows.phases, places[0]);
   else setTable(kernels, law, places[0], places[1], columns);
@@ -99,11 +147,8 @@ export function levelMap(
   kernels.foldRows(rows, spare, stride, stride - firstColumn, range.count);
   const tables = places.slice(lawRows.tables.length);
   fillMagnitudeWeights(inputs, tables, range, kernels, factors, bands, scratch);
-  kernels.multiplyRows(out, masses, columns, factors, width, bands, rows, stride, firstColumn);
-  const size = masses * columns;
-  if (besides) for (let i = 0; i < size; i++) memory[out + i] += besides[i];
-  kernels.clip(out, size);
-  return memory.slice(out, out + size);
+  kernels.multiplyRows(out, masses, factors, width, bands, rows, stride, firstColumn);
+  return { kernels, memory, out, stride, firstColumn };
 }
 
 /** Writes curve and distances, and tells where the distances begin. */

@@ -2,7 +2,7 @@ import { distanceModulus } from '@/lib/quantities/magnitudes';
 import { ageNodeEnds, ageNodes, type WeightedNodes } from './age';
 import { checkContrastCurve } from './contrast';
 import { coolNodes, reportWithinRelation } from './cooling';
-import { distanceNodes } from './distance';
+import { distanceNodes, smoothDistanceNodes } from './distance';
 import { effectiveCurve } from './effective-curve';
 import { ageUnder } from './field-age';
 import type {
@@ -71,7 +71,7 @@ export function prepareStar(
     return nodes;
   };
   const ends = ageNodeEnds(...nodeRule);
-  const distances = distanceNodes(star.distance);
+  const distances = nodesOfDistance(star, settings);
   const extinctionMag = star.extinctionMag ?? 0;
   if (!Number.isFinite(extinctionMag)) {
     throw new RangeError(`extinctionMag of ${star.name} must be finite, got ${extinctionMag}`);
@@ -98,6 +98,16 @@ export function prepareStar(
     curves,
     report: mergeReports(reports),
   };
+}
+
+/** The sharpest curve of a smooth threshold tells how many nodes are needed. */
+function nodesOfDistance(
+  { distance, curves }: StarInputs,
+  { threshold }: SensitivitySettings,
+): WeightedNodes {
+  if (threshold === 'hard') return distanceNodes(distance);
+  const nSigma = curves.reduce((most, curve) => Math.max(most, curve.nSigma), 0);
+  return distanceNodes(distance, smoothDistanceNodes(distance, nSigma));
 }
 
 /** Apparent magnitude of the star for each curve; differing bands need one each. */

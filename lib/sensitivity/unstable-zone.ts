@@ -61,7 +61,7 @@ export function isRemoved(
  * not being seen. Nodes are judged one by one; between a removed node and a kept one the map falls
  * on a straight line in ln a, so the zone's edge is as sharp as the grid.
  *
- * @param completeness shape [mass, semiMajorAxis], row-major, changed in place
+ * @param completeness shape [mass, semiMajorAxis], row-major, plain or encoded, changed in place
  * @param grid its nodes
  * @param star see StarInputs
  * @param settings see SensitivitySettings
@@ -69,7 +69,7 @@ export function isRemoved(
  * @throws RangeError as unstableZone
  */
 export function removeUnstableNodes(
-  completeness: Float64Array,
+  completeness: Float64Array | Uint16Array,
   grid: MapGrid,
   star: StarInputs,
   settings: SensitivitySettings,

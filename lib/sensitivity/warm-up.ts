@@ -1,4 +1,4 @@
-import { computeCompletenessMap } from './completeness';
+import { computeEncodedMap } from './completeness';
 import { ECCENTRICITY_PRESETS } from './eccentricity';
 import { DEFAULT_GRID } from './map-grid';
 import type { StarInputs } from './types';
@@ -29,7 +29,7 @@ export function warmUpMaps(): number {
         },
       ],
     };
-    computeCompletenessMap(star, { kind: 'built-in' }, DEFAULT_GRID(), {
+    computeEncodedMap(star, { kind: 'built-in' }, DEFAULT_GRID(), {
       eccentricity: law,
       threshold: i % 2 === 0 ? 'smooth' : 'hard',
       massOutsideTable: 'undetectable',

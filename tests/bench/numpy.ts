@@ -1,18 +1,18 @@
 import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
-import { computeCompletenessMap } from '@/lib/sensitivity';
+import { decodeMap } from '@/lib/sensitivity';
 import type { Amount } from './amount';
+import { engineMap, warmUpEngine } from './maps';
 import { readNpy } from './npy';
 import { MonteCarloProcess, monteCarloScript, numpyCommand, runToEnd } from './numpy-process';
 import { mapErrors, referenceMap } from './reference';
 import type { Errors, Line, Target } from './report';
 import { compareTimed, millisecondsOf } from './rounds';
-import { COOLING, GRID, inventStars, inventSurvey, settings } from './survey';
+import { inventStars, inventSurvey } from './survey';
 import { writeSurvey } from './survey-file';
 
 const YARDSTICK_STARS = 4;
-const WARM_UP_STARS = 40;
 const COLD_STARS = 78;
 
 const WARM: Target[] = [
@@ -22,9 +22,6 @@ const WARM: Target[] = [
   { of: 'mean', bound: 'at most', must: 5e-5 },
 ];
 const COLD: Target[] = [{ of: 'ratio', bound: 'at least', must: 12 }];
-
-const mapOf = (star: ReturnType<typeof inventStars>[number]) =>
-  computeCompletenessMap(star, COOLING, GRID, settings('smooth')).map.completeness;
 
 /** Maps of a file, in pieces of one star. */
 function mapsOfFile(file: string): Float64Array[] {
@@ -43,16 +40,19 @@ async function warmLines(command: string, folder: string, amount: Amount): Promi
   const few = inventStars(YARDSTICK_STARS);
   const references = few.map((star) => referenceMap(star, 'smooth', amount.resolution.smooth));
   const plain = mapErrors(mapsOfFile(mapsFile), references);
-  const errors: Errors = mapErrors(few.map(mapOf), references);
+  const errors: Errors = mapErrors(
+    few.map((star) => decodeMap(engineMap(star, 'smooth'))),
+    references,
+  );
   const numpy = new MonteCarloProcess(command, surveyFile);
   try {
     await numpy.start();
     await numpy.measure(0, YARDSTICK_STARS);
-    for (const star of inventStars(WARM_UP_STARS)) mapOf(star);
+    const after = warmUpEngine('smooth');
     const lines: Line[] = [];
     for (const stars of amount.smoothMaps.filter((count) => count >= COLD_STARS)) {
       const sample = inventStars(stars);
-      const run = () => sample.reduce((sum, star) => sum + mapOf(star)[0], 0);
+      const run = () => sample.reduce((sum, star) => sum + engineMap(star, 'smooth')[0], 0);
       const compared = await compareTimed(
         async () => millisecondsOf({ run }),
         () => numpy.measure(0, YARDSTICK_STARS),
@@ -66,7 +66,7 @@ async function warmLines(command: string, folder: string, amount: Amount): Promi
         medianMs: compared.medianMs,
         ratio: compared.ratio,
         unit: 'times',
-        yardstick: `NumPy ${numpy.version} Monte Carlo, 10^4 draws (RMS ${plain.RMS.toExponential(1)})`,
+        yardstick: `NumPy ${numpy.version} Monte Carlo, 10^4 draws (RMS ${plain.RMS.toExponential(1)}), after ${after} stars`,
         errors,
         targets: WARM,
       });

@@ -119,3 +119,27 @@ export async function compareTimed(
     ratio: spreadOf(subjectMs.map((ms, round) => (scale * yardstickMs[round]) / ms)),
   };
 }
+
+/** Batches in a row without a new best time after which a thread counts as warm. */
+const BATCHES_WITHOUT_GAIN = 20;
+/** A best time that is nearer than this to the last one is no gain. */
+const GAIN = 0.01;
+const MOST_BATCHES = 200;
+
+/**
+ * Repeats a batch until it gets no faster: the compiler has then seen the work often enough.
+ *
+ * @returns number of batches
+ */
+export function warmUp(run: () => number): number {
+  let best = Infinity;
+  let without = 0;
+  let batches = 0;
+  while (without < BATCHES_WITHOUT_GAIN && batches < MOST_BATCHES) {
+    const ms = millisecondsOf({ run });
+    batches++;
+    without = ms < (1 - GAIN) * best ? 0 : without + 1;
+    best = Math.min(best, ms);
+  }
+  return batches;
+}

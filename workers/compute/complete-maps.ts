@@ -1,7 +1,7 @@
 import {
   type CoolingRelation,
   type CoolingReport,
-  computeCompletenessMap,
+  computeEncodedMap,
   type MapGrid,
   type SensitivitySettings,
   type StarInputs,
@@ -19,19 +19,17 @@ export interface CompleteMapsInput {
   settings: SensitivitySettings;
 }
 
-/** One answer per star, in order: its map, or the sentence that says why there is none. */
-export type CompletedMap =
-  | { completeness: Float64Array; report: CoolingReport }
-  | { fault: string };
+/** One answer per star, in order: its map as it is stored, or the sentence that says why there is none. */
+export type CompletedMap = { encoded: Uint16Array; report: CoolingReport } | { fault: string };
 
 export default function completeMaps(input: CompleteMapsInput): CompletedMap[] {
   const { stars, cooling, grid, settings } = input;
   const buffers: ArrayBufferLike[] = [];
   const answers = stars.map((star): CompletedMap => {
     try {
-      const { map, report } = computeCompletenessMap(star, cooling, grid, settings);
-      buffers.push(map.completeness.buffer);
-      return { completeness: map.completeness, report };
+      const made = computeEncodedMap(star, cooling, grid, settings);
+      buffers.push(made.encoded.buffer);
+      return made;
     } catch (error) {
       return { fault: error instanceof Error ? error.message : String(error) };
     }

@@ -112,7 +112,7 @@ async function storeBatch(
       ready.map(({ group: [{ digest, inputs, name }], answer }) => ({
         ...recipe.grid,
         digest,
-        completeness: answer.completeness,
+        encoded: answer.encoded,
         inputs: { ...inputs, star: name, coolingName: recipe.coolingName },
         report: answer.report,
       })),

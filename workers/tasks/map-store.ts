@@ -3,11 +3,12 @@ import { select } from '@/lib/queue/statement';
 import { type CoolingReport, ENGINE_VERSION, type MapGrid } from '@/lib/sensitivity';
 import { CompletenessMapRow } from '@/models';
 import { canonicalJson } from '@/models/digest';
-import { packMap } from '@/models/map-values';
+import { packEncoded } from '@/models/map-values';
 
 export interface MapToStore extends MapGrid {
   digest: string;
-  completeness: Float64Array;
+  /** Shape [mass, semiMajorAxis], as encodeMap returns it; nobody reads it afterwards. */
+  encoded: Uint16Array;
   inputs: Record<string, unknown>;
   report: CoolingReport | Record<string, unknown>;
 }
@@ -15,7 +16,7 @@ export interface MapToStore extends MapGrid {
 /** What the row of a computed map holds. */
 export function rowOfMap(
   collaborationId: string,
-  { digest, completeness, inputs, report, ...grid }: MapToStore,
+  { digest, encoded, inputs, report, ...grid }: MapToStore,
 ) {
   return {
     collaborationId,
@@ -24,7 +25,7 @@ export function rowOfMap(
     engineVersion: ENGINE_VERSION,
     massMjup: [...grid.massMjup],
     semiMajorAxisAu: [...grid.semiMajorAxisAu],
-    ...packMap(completeness),
+    ...packEncoded(encoded),
     // Typed arrays as lists: JSON would write them as objects.
     inputs: JSON.parse(canonicalJson(inputs)),
     report: JSON.parse(canonicalJson(report)),

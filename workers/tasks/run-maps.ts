@@ -6,6 +6,7 @@ import {
   combineDeepest,
   combineIndependent,
   ENGINE_VERSION,
+  encodeMap,
   type MapGrid,
 } from '@/lib/sensitivity';
 import type { CompletenessMapRow } from '@/models';
@@ -223,7 +224,9 @@ export function combineRows(rows: CompletenessMapRow[], rule: Rule) {
   const flaggedMassNodes = [...combined.massMjup.keys()].filter((i) =>
     flagged.has(combined.massMjup[i]),
   );
-  return { ...combined, report: { flaggedMassNodes } };
+  const { massMjup, semiMajorAxisAu, completeness } = combined;
+  const encoded = encodeMap(completeness);
+  return { massMjup, semiMajorAxisAu, encoded, report: { flaggedMassNodes } };
 }
 
 /** Masses at which a map rests on the edge of its cooling relation or beyond it. */

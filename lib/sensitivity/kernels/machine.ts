@@ -4,6 +4,7 @@
  * adds in the same order.
  */
 let memory = new Float64Array(1 << 17);
+let shorts = new Uint16Array(memory.buffer);
 
 /** Memory of at least so many doubles; what it held stays, older views of it end. */
 export function reserve(doubles: i32): Float64Array {
@@ -11,6 +12,7 @@ export function reserve(doubles: i32): Float64Array {
     const larger = new Float64Array(Math.ceil(doubles * 1.25));
     larger.set(memory);
     memory = larger;
+    shorts = new Uint16Array(larger.buffer);
   }
   return memory;
 }
@@ -162,4 +164,25 @@ export function multiplyPair(
 export function clip(at: i32, count: i32): void {
   const m = memory;
   for (let i = at; i < at + count; i++) m[i] = Math.min(1, Math.max(0, m[i]));
+}
+
+/** Sets `count` 16-bit numbers to 0; `at` counts such numbers, four to a double. */
+export function clearShorts(at: i32, count: i32): void {
+  shorts.fill(0, at, at + count);
+}
+
+/**
+ * Writes `count` numbers, cut to 0…1, as 16-bit numbers of 0 to 65535, rounded half up; `to` counts
+ * such numbers, four to a double.
+ *
+ * @returns 1, or 0 where one of them is no number
+ */
+export function encode(to: i32, from: i32, count: i32): i32 {
+  let isWhole = 1;
+  for (let i = 0; i < count; i++) {
+    const value = Math.min(1, Math.max(0, memory[from + i]));
+    if (Number.isNaN(value)) isWhole = 0;
+    shorts[to + i] = Math.floor(65535 * value + 0.5);
+  }
+  return isWhole;
 }

@@ -3,7 +3,7 @@ import { readFileSync } from 'node:fs';
 import { describe, expect, test, vi } from 'vitest';
 import { logSpacedAxis } from '@/lib/numerics/grid';
 import { createRandom } from '@/lib/numerics/random';
-import type { CoolingRelation, MapGrid, StarInputs } from '@/lib/sensitivity';
+import { type CoolingRelation, encodeMap, type MapGrid, type StarInputs } from '@/lib/sensitivity';
 import { compiledKernels } from '@/lib/sensitivity/kernels/compiled';
 import type { Kernels } from '@/lib/sensitivity/kernels/kernels';
 import { plainKernels } from '@/lib/sensitivity/kernels/plain';
@@ -72,9 +72,9 @@ describe('the compiled kernels give the bits of the plain ones', () => {
     vi.doMock('@/lib/sensitivity/kernels/compiled', () => ({
       compiledKernels: isCompiled ? compiledHere : () => null,
     }));
-    const { computeCompletenessMap } = await import('@/lib/sensitivity/completeness');
+    const engine = await import('@/lib/sensitivity/completeness');
     vi.doUnmock('@/lib/sensitivity/kernels/compiled');
-    return computeCompletenessMap;
+    return engine;
   }
 
   test('in every map of stars of all kinds', { timeout: 120_000 }, async () => {
@@ -85,9 +85,14 @@ describe('the compiled kernels give the bits of the plain ones', () => {
         for (const cooling of [{ kind: 'built-in' } as const, table]) {
           for (const threshold of ['smooth', 'hard'] as const) {
             const settings = buildSettings({ threshold, ageOutsideTable: 'edge' });
-            const fast = compiled(star, cooling, grid, settings).map.completeness;
-            const slow = plain(star, cooling, grid, settings).map.completeness;
-            expect(fast, `${name}, ${cooling.kind}, ${threshold}`).toEqual(slow);
+            const given = [star, cooling, grid, settings] as const;
+            const label = `${name}, ${cooling.kind}, ${threshold}`;
+            const fast = compiled.computeCompletenessMap(...given).map.completeness;
+            const slow = plain.computeCompletenessMap(...given).map.completeness;
+            expect(fast, label).toEqual(slow);
+            const stored = encodeMap(slow);
+            expect(compiled.computeEncodedMap(...given).encoded, label).toEqual(stored);
+            expect(plain.computeEncodedMap(...given).encoded, label).toEqual(stored);
             seen += fast.reduce((sum, value) => sum + (value > 0.01 && value < 0.99 ? 1 : 0), 0);
           }
         }
@@ -95,6 +100,32 @@ describe('the compiled kernels give the bits of the plain ones', () => {
     }
     expect(seen).toBeGreaterThan(500);
   });
+});
+
+test('rows are written as they are stored, cut to 0 to 1, and tell what is no number', () => {
+  const [masses, columns, stride] = [3, 19, 24];
+  const [rows, to] = [100, 4000];
+  for (const kernels of [compiledHere(), plainKernels]) {
+    const memory = kernels.reserve(MEMORY);
+    const { uniform } = createRandom('stored');
+    for (let i = 0; i < masses * stride; i++) memory[rows + i] = 1.4 * uniform() - 0.2;
+    const wanted = encodeMap(
+      Float64Array.from({ length: masses * columns }, (_, i) => {
+        const column = i % columns;
+        const value = memory[rows + Math.floor(i / columns) * stride + column];
+        return column < 8 ? 0 : Math.min(1, Math.max(0, value));
+      }),
+    );
+    expect(kernels.encodeRows(to, rows, masses, columns, stride, 8)).toBe(1);
+    const stored = new Uint16Array(memory.buffer, 2 * to, masses * columns);
+    expect(stored.slice(), kernels.name).toEqual(wanted);
+    for (const strange of [rows + 9, rows + stride + 18]) {
+      const before = memory[strange];
+      memory[strange] = Number.NaN;
+      expect(kernels.encodeRows(to, rows, masses, columns, stride, 8), kernels.name).toBe(0);
+      memory[strange] = before;
+    }
+  }
 });
 
 describe('the memory of the kernels', () => {

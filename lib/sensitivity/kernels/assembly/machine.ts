@@ -194,3 +194,47 @@ export function clip(at: i32, count: i32): void {
   }
   if (place < end) store<f64>(place, Math.min(1, Math.max(0, load<f64>(place))));
 }
+
+export function clearShorts(at: i32, count: i32): void {
+  memory.fill((<usize>at) << 1, 0, (<usize>count) << 1);
+}
+
+/** Beyond 2⁵² a double's last bits are a whole number. */
+const WHOLE_BITS: f64 = 4503599627370496;
+
+function cutPair(at: usize): v128 {
+  return f64x2.pmin(f64x2.pmax(v128.load(at), f64x2.splat(0)), f64x2.splat(1));
+}
+
+function wholePair(value: v128): v128 {
+  const scaled = f64x2.add(f64x2.mul(f64x2.splat(65535), value), f64x2.splat(0.5));
+  return f64x2.add(f64x2.floor(scaled), f64x2.splat(WHOLE_BITS));
+}
+
+export function encode(to: i32, from: i32, count: i32): i32 {
+  let target = (<usize>to) << 1;
+  let at = bytes(from);
+  const end = bytes(from + count);
+  // One that is no number makes the sum none.
+  let sum = f64x2.splat(0);
+  for (; at + 64 <= end; at += 64) {
+    const a = cutPair(at);
+    const b = cutPair(at + 16);
+    const c = cutPair(at + 32);
+    const d = cutPair(at + 48);
+    sum = f64x2.add(sum, f64x2.add(f64x2.add(a, b), f64x2.add(c, d)));
+    const low = v128.shuffle<i32>(wholePair(a), wholePair(b), 0, 2, 4, 6);
+    const high = v128.shuffle<i32>(wholePair(c), wholePair(d), 0, 2, 4, 6);
+    v128.store(target, i16x8.narrow_i32x4_u(low, high));
+    target += 16;
+  }
+  let isWhole: i32 = v128.any_true(f64x2.ne(sum, sum)) ? 0 : 1;
+  for (; at < end; at += 8) {
+    const value = load<f64>(at);
+    if (!(value <= Infinity)) isWhole = 0;
+    const cut = Math.min(1, Math.max(0, value));
+    store<u16>(target, <u16>Math.floor(65535 * cut + 0.5));
+    target += 2;
+  }
+  return isWhole;
+}

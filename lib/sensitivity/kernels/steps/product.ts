@@ -1,9 +1,9 @@
-import { clear, move, multiplyPair, real, whole } from '../machine';
+import { clear, clearShorts, encode, move, multiplyPair, real, whole } from '../machine';
 
 /**
- * C = W · H of every mass, pressed together to `columns` of a row.
+ * C = W · H of every mass, from the first column that is reached.
  *
- * @param out where the map goes, (masses + 1) · stride doubles of which masses · columns are the map
+ * @param out where the rows go, (masses + 1) · stride doubles
  * @param factors rows of `width` weights
  * @param bands where these are not 0, see fillWeights
  * @param rows H, `stride` apart
@@ -12,7 +12,6 @@ import { clear, move, multiplyPair, real, whole } from '../machine';
 export function multiplyRows(
   out: i32,
   masses: i32,
-  columns: i32,
   factors: i32,
   width: i32,
   bands: i32,
@@ -36,8 +35,46 @@ export function multiplyRows(
       stride - firstColumn,
     );
   }
+}
+
+/**
+ * Presses what multiplyRows wrote together, to `columns` of a row.
+ *
+ * @param firstColumn the columns before it are set to 0
+ */
+export function pressRows(
+  out: i32,
+  masses: i32,
+  columns: i32,
+  stride: i32,
+  firstColumn: i32,
+): void {
   for (let m: i32 = 0; m < masses; m++) {
     move(out + m * columns + firstColumn, out + m * stride + firstColumn, columns - firstColumn);
     clear(out + m * columns, firstColumn);
   }
+}
+
+/**
+ * Writes what multiplyRows wrote as it is stored, `columns` of a row, see encode.
+ *
+ * @param to where it goes, counted in 16-bit numbers
+ * @returns 1, or 0 where something is no number
+ */
+export function encodeRows(
+  to: i32,
+  rows: i32,
+  masses: i32,
+  columns: i32,
+  stride: i32,
+  firstColumn: i32,
+): i32 {
+  let areNumbers: i32 = 1;
+  for (let m: i32 = 0; m < masses; m++) {
+    clearShorts(to + m * columns, firstColumn);
+    const from = rows + m * stride + firstColumn;
+    const reached = encode(to + m * columns + firstColumn, from, columns - firstColumn);
+    if (reached === 0) areNumbers = 0;
+  }
+  return areNumbers;
 }
