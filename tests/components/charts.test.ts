@@ -149,6 +149,19 @@ describe('ticks', () => {
 });
 
 describe('paths', () => {
+  it('are written to hundredths of a px', () => {
+    const ys = [0, -0.004, -0.126, 0.1, 0.05, 7, -12.5, 99.999, 759.994, 1234.56];
+    const wanted = ys.map((y, i) => `${i === 0 ? 'M' : 'L'}${i},${Math.round(y * 100) / 100 + 0}`);
+    expect(
+      linePath(
+        ys.map((_, i) => i),
+        ys,
+        identity,
+        identity,
+      ),
+    ).toBe(wanted.join(''));
+  });
+
   const identity = (value: number) => value;
 
   it('break a line where it has no value', () => {

@@ -14,7 +14,7 @@ export interface RowWindow {
 }
 
 /** Rows of the first screen before anything was measured. */
-const FIRST = 32;
+const FIRST = 24;
 
 export function allRows(count: number): RowWindow {
   return { indices: Array.from({ length: count }, (_, index) => index), before: 0, after: 0 };
