@@ -31,7 +31,8 @@ export const ENGINE_VERSION: string = '5';
  * C(m, a) = E ∫ c(θ) p(θ; M(m, t) + μ(d) + A - m_star) dF(θ d / a) over age t and distance d, F
  * the projected separation's distribution. One curve takes the product of weights, exact in age, and
  * rows of cells of magnitude; several curves of one position, and single ages under a hard
- * threshold, the sum over separation. Distances are three nodes, fewer where a smooth threshold hides the error.
+ * threshold, the sum over separation. Distances are three nodes, fewer where a smooth threshold hides
+ * their error.
  *
  * An age law's tails beyond the cooling relation take its nearest age; whether the star is refused
  * there is told by its age nodes, which leave out 2 % (smooth) or 0.6 % (hard) at each end.
