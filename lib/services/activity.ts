@@ -7,6 +7,7 @@ import type { Role } from '@/lib/schemas/common';
 import { database } from '@/models';
 import { kindOf, newsFor } from './activity-kinds';
 import { nameItems } from './item-names';
+import { together } from './together';
 
 const EXCERPT_LENGTH = 160;
 /** Whom a new release asks for a signature. */
@@ -88,6 +89,28 @@ function excerptOf(body: string | null): string | null {
 export async function listActivity(actor: Actor, query: ActivityQuery): Promise<ActivityPage> {
   demand(actor, 'read');
   const after = readCursor(query.cursor);
+  const bind = [
+    actor.collaborationId,
+    newsFor(actor, query.kind),
+    actor.personId,
+    actor.roles.some((role) => SIGNERS.includes(role)),
+    query.for === 'me',
+    query.person ?? null,
+    query.item ?? null,
+    after?.[0] ?? null,
+    after?.[1] ?? null,
+    query.limit + 1,
+  ];
+  return together(`activity ${JSON.stringify(bind)}`, () =>
+    readActivity(actor.collaborationId, bind, query.limit),
+  );
+}
+
+async function readActivity(
+  collaborationId: string,
+  bind: unknown[],
+  limit: number,
+): Promise<ActivityPage> {
   const rows = await database().query<Fields>(
     `select e.id, e.at, to_char(e.at at time zone 'utc', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"') as stamp,
        e.person_id as "personId", p.name, e.action, e.item_kind as "itemKind",
@@ -98,25 +121,11 @@ export async function listActivity(actor: Actor, query: ActivityQuery): Promise<
        and ($6::uuid is null or e.person_id = $6::uuid) and ($7::text is null or e.item_id = $7)
        and ($8::timestamptz is null or (e.at, e.id) < ($8::timestamptz, $9::text))
      order by e.at desc, e.id desc limit $10`,
-    {
-      bind: [
-        actor.collaborationId,
-        newsFor(actor, query.kind),
-        actor.personId,
-        actor.roles.some((role) => SIGNERS.includes(role)),
-        query.for === 'me',
-        query.person ?? null,
-        query.item ?? null,
-        after?.[0] ?? null,
-        after?.[1] ?? null,
-        query.limit + 1,
-      ],
-      type: QueryTypes.SELECT,
-    },
+    { bind, type: QueryTypes.SELECT },
   );
-  const shown = rows.slice(0, query.limit);
+  const shown = rows.slice(0, limit);
   const names = await nameItems(
-    actor.collaborationId,
+    collaborationId,
     shown.map(({ itemKind: kind, itemId: id }) => ({ kind, id })),
   );
   return activityPageSchema.parse({
@@ -132,7 +141,7 @@ export async function listActivity(actor: Actor, query: ActivityQuery): Promise<
         excerpt: row.action === 'write-note' ? excerptOf(row.body) : null,
       };
     }),
-    next: rows.length > query.limit ? writeCursor(shown[shown.length - 1]) : null,
+    next: rows.length > limit ? writeCursor(shown[shown.length - 1]) : null,
   });
 }
 

@@ -18,6 +18,7 @@ import {
   type MapsTogether,
   summariseTogether,
 } from './survey-depth';
+import { together } from './together';
 
 type Entry = Pick<TargetRow, 'id' | 'surveyId' | 'starId' | 'mapId' | 'mapState' | 'attributes'> & {
   isComputed: boolean;
@@ -65,6 +66,15 @@ export async function previewCombination(
 ): Promise<CombinationPreview> {
   demand(actor, 'read');
   await checkCombination(actor, definition);
+  return together(`combination ${actor.collaborationId} ${canonicalJson(definition)}`, () =>
+    readPreview(actor, definition),
+  );
+}
+
+async function readPreview(
+  actor: Actor,
+  definition: CombinationDefinition,
+): Promise<CombinationPreview> {
   const { surveys, entries, ofSurvey } = await loadEntries(actor, definition);
   const entriesOf = new Map<string, Entry[]>();
   for (const entry of entries) {

@@ -4,15 +4,18 @@ import { demand } from '@/lib/access/permissions';
 import { describeSample } from '@/lib/schemas/sample-words';
 import {
   type previewSampleSchema,
+  type SampleDefinition,
   type SampleHistogram,
   type SamplePreview,
   spectralClasses,
 } from '@/lib/schemas/samples';
 import { SurveyRow, TargetRow } from '@/models';
 import { applyAdopted, loadAdopted } from '@/models/adopted-values';
+import { canonicalJson } from '@/models/digest';
 import { findLeftOut, gatherStarFacts, type StarFacts } from '@/models/sample-selection';
 import { checkSurveys, surveyNames } from './samples';
 import { notArchived } from './sharing/archived';
+import { together } from './together';
 
 const BINS = 14;
 
@@ -124,6 +127,17 @@ export async function previewSample(
   demand(actor, 'read');
   await checkSurveys(actor, definition.surveyIds ?? [], 'definition.surveyIds');
   await checkSurveys(actor, surveyIds ?? [], 'surveyIds');
+  const asked = canonicalJson({ definition, surveyIds: surveyIds ?? null });
+  return together(`sample ${actor.collaborationId} ${asked}`, () =>
+    readSample(actor, definition, surveyIds),
+  );
+}
+
+async function readSample(
+  actor: Actor,
+  definition: SampleDefinition,
+  surveyIds: readonly string[] | undefined,
+): Promise<SamplePreview> {
   const { targets } = await readEntries(actor, surveyIds);
   const usable = targets.filter(({ leftOutReason }) => leftOutReason === null);
   const out = findLeftOut(usable, definition);

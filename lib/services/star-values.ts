@@ -23,6 +23,7 @@ import { recordAudit } from './audit';
 import { ageOf, distanceOf, type EntryRow, loadSky } from './star-facts';
 import { refreshMaps } from './star-join';
 import { findStar, leadsStar } from './stars';
+import { together } from './together';
 
 interface Chosen {
   value: AgeValue | DistanceValue | null;
@@ -146,6 +147,10 @@ const COUNTS = `
 export async function listValueTables(actor: Actor): Promise<{ tables: ValueTableView[] }> {
   demand(actor, 'read');
   const { collaborationId } = actor;
+  return together(`value tables ${collaborationId}`, () => readValueTables(collaborationId));
+}
+
+async function readValueTables(collaborationId: string): Promise<{ tables: ValueTableView[] }> {
   const [tables, values, counts] = await Promise.all([
     ValueTableRow.findAll({
       where: { collaborationId },

@@ -19,6 +19,7 @@ import { behindRow, type PageAsked } from './behind-row';
 import { refuseShared } from './sharing/shared-surveys';
 import { currentYardstick, summariseMaps } from './survey-depth';
 import { findSurvey, isLead } from './surveys';
+import { together } from './together';
 
 type AlsoIn = Map<string, TargetView['alsoIn']>;
 
@@ -156,7 +157,17 @@ export async function listTargets(
   slug: string,
   { limit, offset, after }: PageAsked,
 ): Promise<TargetList> {
-  const survey = await findSurvey(actor, slug);
+  const { id } = await findSurvey(actor, slug);
+  const key = `targets ${id} ${limit} ${offset} ${after ?? ''}`;
+  return together(key, () => readTargets(id, { limit, offset, after }));
+}
+
+async function readTargets(
+  surveyId: string,
+  { limit, offset, after }: PageAsked,
+): Promise<TargetList> {
+  const survey = await SurveyRow.findByPk(surveyId);
+  if (!survey) throw new NotFound('survey');
   const { collaborationId } = survey;
   const where = { surveyId: survey.id };
   const rows = await TargetRow.findAll({

@@ -20,6 +20,7 @@ import {
   ReleaseRunRow,
 } from '@/models';
 import { needsTwoPeople } from '../settings';
+import { together } from '../together';
 
 const RUNS = `
   select q.release_id as "releaseId", r.id, r.number, 'A-' || a.number as "analysisKey",
@@ -80,15 +81,15 @@ async function freezersOf(ids: string[]): Promise<Map<string, Set<string | null>
 export const OWN_FREEZE =
   'You froze a run of this release: another author or an owner must agree to it';
 
-export async function describeReleases(actor: Actor, rows: ReleaseRow[]): Promise<ReleaseView[]> {
-  if (rows.length === 0) return [];
+/** What hangs on releases, read for all of them at once, whoever asks. */
+async function readBehind(collaborationId: string, rows: ReleaseRow[]) {
   const ids = rows.map(({ id }) => id);
   const [runs, jobs, others, makers, files, freezers, isTwo] = await Promise.all([
     runsOfReleases(ids),
     JobRow.findAll({ where: { id: rows.flatMap(({ jobId }) => jobId ?? []) } }),
     ReleaseRow.findAll({
       where: {
-        collaborationId: actor.collaborationId,
+        collaborationId,
         [Op.or]: [
           { id: rows.flatMap(({ replacesId }) => replacesId ?? []) },
           { replacesId: ids, publishedAt: { [Op.not]: null } },
@@ -102,8 +103,17 @@ export async function describeReleases(actor: Actor, rows: ReleaseRow[]): Promis
       order: [['position', 'ASC']],
     }),
     freezersOf(ids),
-    needsTwoPeople(actor.collaborationId),
+    needsTwoPeople(collaborationId),
   ]);
+  return { rows, runs, jobs, others, makers, files, freezers, isTwo };
+}
+
+export async function describeReleases(actor: Actor, rows: ReleaseRow[]): Promise<ReleaseView[]> {
+  return rows.length === 0 ? [] : viewsOf(actor, await readBehind(actor.collaborationId, rows));
+}
+
+function viewsOf(actor: Actor, behind: Awaited<ReturnType<typeof readBehind>>): ReleaseView[] {
+  const { rows, runs, jobs, others, makers, files, freezers, isTwo } = behind;
   return rows.map((row) => {
     const job = jobs.find(({ id }) => id === row.jobId);
     const state = stateOfRelease(row, job);
@@ -183,12 +193,16 @@ export async function findRelease(actor: Actor, key: string): Promise<ReleaseRow
 /** All releases, the newest first. */
 export async function listReleases(actor: Actor): Promise<{ releases: ReleaseView[] }> {
   demand(actor, 'read');
-  database();
-  const rows = await ReleaseRow.findAll({
-    where: { collaborationId: actor.collaborationId },
-    order: [['number', 'DESC']],
+  const { collaborationId } = actor;
+  const behind = await together(`releases ${collaborationId}`, async () => {
+    database();
+    const rows = await ReleaseRow.findAll({
+      where: { collaborationId },
+      order: [['number', 'DESC']],
+    });
+    return readBehind(collaborationId, rows);
   });
-  return { releases: await describeReleases(actor, rows) };
+  return { releases: viewsOf(actor, behind) };
 }
 
 export async function getRelease(actor: Actor, key: string): Promise<ReleaseView> {
