@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { type ActivityFilter, fetchEarlier } from '@/components/hooks/use-activity';
 import { Button } from '@/components/ui/button';
 import { Link } from '@/components/ui/link';
@@ -29,20 +29,14 @@ const emptyWords = (filter: ActivityFilter) =>
 /** What happened in the collaboration, in plain words, day by day. */
 export function ActivityScreen({ collaboration, initial, filter, people }: ActivityScreenProps) {
   const [pages, setPages] = useState([initial]);
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction();
   const entries = pages.flatMap((page) => page.entries);
   const next = pages[pages.length - 1].next;
   const earlier = async () => {
     if (next === null) return;
-    setBusy(true);
-    setRefusal(null);
-    try {
-      setPages([...pages, await fetchEarlier(collaboration, filter, next)]);
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
+    await perform(async () =>
+      setPages([...pages, await fetchEarlier(collaboration, filter, next)]),
+    );
   };
   const itemLabel = entries.find(({ item }) => item?.id === filter.item)?.item?.label;
   return (
@@ -60,7 +54,7 @@ export function ActivityScreen({ collaboration, initial, filter, people }: Activ
       ) : (
         <ActivityDays collaboration={collaboration} entries={entries} />
       )}
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       {next !== null && (
         <div className="mt-5">
           <Button isBusy={isBusy} onClick={() => void earlier()}>

@@ -3,6 +3,7 @@
 import { useRouter } from 'next/navigation';
 import { useMemo, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { createAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
@@ -79,8 +80,8 @@ export function NewAnalysis(props: NewAnalysisProps) {
   });
   const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
   const [ownName, setOwnName] = useState<string>();
-  const [busy, setBusy] = useState<'create' | 'run'>();
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction({ leaves: true });
+  const [pressed, setPressed] = useState<'create' | 'run'>();
 
   const population = populations.find((candidate) => candidate.id === populationId);
   const chosenSurveys = offered.filter((survey) => chosen.includes(survey.id));
@@ -109,16 +110,12 @@ export function NewAnalysis(props: NewAnalysisProps) {
 
   const create = async (andRun: boolean) => {
     if (!checked?.success) return;
-    setBusy(andRun ? 'run' : 'create');
-    setProblem(undefined);
-    try {
+    setPressed(andRun ? 'run' : 'create');
+    await perform(async () => {
       const created = await createAnalysis(collaboration, { name, recipe: checked.data });
       if (andRun) await startRun(collaboration, created.key);
       router.push(`/${collaboration}/analyses/${created.key}`);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      setBusy(undefined);
-    }
+    });
   };
 
   return (
@@ -219,14 +216,14 @@ export function NewAnalysis(props: NewAnalysisProps) {
               <Button
                 variant="primary"
                 onClick={() => create(true)}
-                isBusy={busy === 'run'}
+                isBusy={isBusy && pressed === 'run'}
                 disabledReason={fault}
               >
                 Create and run
               </Button>
               <Button
                 onClick={() => create(false)}
-                isBusy={busy === 'create'}
+                isBusy={isBusy && pressed === 'create'}
                 disabledReason={fault}
               >
                 Create without a run

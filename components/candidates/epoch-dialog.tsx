@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { addObservation } from '@/components/hooks/use-candidates';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -34,19 +33,12 @@ const readEpoch = (form: FormData) => ({
 /** One more day on which the candidate was seen. */
 export function EpochDialog(props: EpochDialogProps) {
   const { collaboration, candidate, isOpen, onClose, onSaved } = props;
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
-  const submit = async (form: FormData) => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const { perform, isBusy, problem } = useAction();
+  const submit = (form: FormData) =>
+    perform(async () => {
       onSaved(await addObservation(collaboration, candidate.id, readEpoch(form)));
       onClose();
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
-  };
+    });
   return (
     <Dialog isOpen={isOpen} onClose={onClose} title={`An epoch of ${candidate.name}`}>
       <form
@@ -73,7 +65,7 @@ export function EpochDialog(props: EpochDialogProps) {
         <NumberField label="Its error, 1 σ" name="contrastError" unit="mag" min={0} />
         <TextField label="Band of the contrast" name="band" maxLength={20} />
         <div className="grid gap-3 sm:col-span-2">
-          {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+          {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
           <div className="flex gap-2">
             <Button type="submit" variant="primary" isBusy={isBusy}>
               Add the epoch

@@ -2,7 +2,7 @@
 
 import { useState } from 'react';
 import type { z } from 'zod';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { giveVerdict } from '@/components/hooks/use-candidates';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -84,23 +84,16 @@ function ValueChoice({ name, title, unit, kept, measured }: ValueChoiceProps) {
 /** Decides, with a reason; whoever may not decide sends the same as a proposal. */
 export function VerdictForm({ collaboration, candidate, onGiven }: VerdictFormProps) {
   const [status, setStatus] = useState<CompanionStatus>(candidate.status);
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
+  const { perform, isBusy, problem } = useAction();
   const isProposal = !candidate.can.vet;
   const isOpenStatus = status === 'candidate' || status === 'ambiguous';
-  const submit = async (element: HTMLFormElement) => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const submit = (element: HTMLFormElement) =>
+    perform(async () => {
       const body = readVerdict(new FormData(element), isProposal);
       onGiven(await giveVerdict(collaboration, candidate.id, body));
       const reason = element.elements.namedItem('reason');
       if (reason instanceof HTMLTextAreaElement) reason.value = '';
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
-  };
+    });
   return (
     <form
       className="grid gap-4"
@@ -160,7 +153,7 @@ export function VerdictForm({ collaboration, candidate, onGiven }: VerdictFormPr
         }}
       />
       <TextAreaField label="Reason" name="reason" required maxLength={2000} rows={4} />
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       <div>
         <Button type="submit" variant="primary" isBusy={isBusy}>
           {isProposal ? 'Send the proposal' : 'Give the verdict'}

@@ -1,6 +1,7 @@
 'use client';
 
-import { type RefObject, useState } from 'react';
+import type { RefObject } from 'react';
+import { useAction } from '@/components/hooks/use-action';
 import { Menu, MenuAction, MenuNote, MenuRule } from '@/components/ui/menu';
 import type { DataTable } from './data-table';
 import type { FigureColumn, FigureType } from './export-figure';
@@ -28,20 +29,10 @@ const types: [FigureType, words: string][] = [
 
 /** Files of one drawing; what makes them is loaded when the first is asked for. */
 export function FigureMenu({ settings, name, description, data, figure }: FigureMenuProps) {
-  const [problem, setProblem] = useState<string>();
-  const [isBusy, setBusy] = useState(false);
+  const { perform, isBusy, problem } = useAction();
   const hasNumbers = data !== undefined || settings.tables !== undefined;
-  const make = (work: (files: typeof import('./export-figure')) => Promise<void>) => async () => {
-    setProblem(undefined);
-    setBusy(true);
-    try {
-      await work(await import('./export-figure'));
-    } catch (reason) {
-      setProblem(reason instanceof Error ? reason.message : String(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+  const make = (work: (files: typeof import('./export-figure')) => Promise<void>) => () =>
+    void perform(async () => work(await import('./export-figure')));
   const words = { ...settings, name, description };
   return (
     <span className="ml-auto print:hidden">

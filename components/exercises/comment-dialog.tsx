@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { useEditing } from '@/components/hooks/use-editing';
 import { commentOn } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
@@ -24,21 +24,14 @@ export function CommentDialog(props: CommentDialogProps) {
   const { collaboration, exerciseKey, who, submission, onClose, onSaved } = props;
   const [comment, setComment] = useState(submission.comment ?? '');
   const editing = useEditing(submission.comment ?? '');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const save = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      await editing.attempt(comment, async (opened) => {
+  const { perform, isBusy, problem } = useAction();
+  const save = () =>
+    perform(() =>
+      editing.attempt(comment, async (opened) => {
         await commentOn(collaboration, exerciseKey, submission.id, opened, comment);
         onSaved();
-      });
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    }
-    setBusy(false);
-  };
+      }),
+    );
   return (
     <Dialog
       isOpen

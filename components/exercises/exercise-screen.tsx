@@ -1,8 +1,8 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
 import { ChangedMeanwhile } from '@/components/hooks/change';
+import { useAction } from '@/components/hooks/use-action';
 import { useEditing } from '@/components/hooks/use-editing';
 import {
   exerciseTableAddress,
@@ -132,33 +132,29 @@ function SettingsSection({
   onChanged(): void;
 }) {
   const [dueOn, setDueOn] = useState(exercise.dueOn ?? '');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const editing = useEditing(exercise.dueOn);
   const setDay = (day: string | null) =>
-    perform(() =>
+    change(() =>
       editing.attempt(day, async (opened) => {
         await updateExercise(collaboration, exercise.key, { dueOn: opened }, { dueOn: day });
         editing.begin(day);
       }),
     );
   const share = ({ isShared }: ExerciseDetail) =>
-    perform(() =>
+    change(() =>
       updateExercise(collaboration, exercise.key, { isShared }, { isShared: !isShared }),
     );
-  const perform = async (work: () => Promise<unknown>) => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      await work();
-      onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      if (reason instanceof ChangedMeanwhile) onChanged();
-    } finally {
-      setBusy(false);
-    }
-  };
+  const change = (work: () => Promise<unknown>) =>
+    perform(async () => {
+      try {
+        await work();
+        onChanged();
+      } catch (reason) {
+        if (reason instanceof ChangedMeanwhile) onChanged();
+        throw reason;
+      }
+    });
   return (
     <section className="min-w-0">
       <SectionOpener title="For whoever sets it" />

@@ -2,7 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { beginExercise, handIn } from '@/components/hooks/use-exercises';
 import { Button } from '@/components/ui/button';
 import { LinkButton } from '@/components/ui/link-button';
@@ -23,19 +23,12 @@ interface OwnWorkProps {
 export function OwnWork({ collaboration, exercise, onChanged }: OwnWorkProps) {
   const { own, can } = exercise;
   const router = useRouter();
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const begin = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const { perform, isBusy, problem } = useAction({ leaves: true });
+  const begin = () =>
+    perform(async () => {
       const { analysis } = await beginExercise(collaboration, exercise.key);
       router.push(`/${collaboration}/analyses/${analysis}`);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      setBusy(false);
-    }
-  };
+    });
   return (
     <section>
       <SectionOpener title="Your work" context={dueWords(exercise)} />
@@ -83,8 +76,7 @@ function HandIn({ collaboration, exercise, onChanged }: OwnWorkProps) {
   const { ready } = exercise;
   const [chosen, setChosen] = useState('');
   const [remark, setRemark] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const runId = ready.some(({ id }) => id === chosen) ? chosen : ready[0]?.id;
   if (runId === undefined) {
     return (
@@ -94,19 +86,12 @@ function HandIn({ collaboration, exercise, onChanged }: OwnWorkProps) {
       </p>
     );
   }
-  const send = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const send = () =>
+    perform(async () => {
       await handIn(collaboration, exercise.key, runId, remark);
       setRemark('');
       onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <div className="grid max-w-[640px] gap-3">
       <SelectField

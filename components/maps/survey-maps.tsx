@@ -1,7 +1,7 @@
 'use client';
 
-import { useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { useSurveyMaps } from '@/components/hooks/use-maps';
 import { startMaps } from '@/components/hooks/use-surveys';
 import { Button } from '@/components/ui/button';
@@ -27,8 +27,7 @@ const toDo: MapStanding[] = ['stale', 'missing', 'failed'];
 export function SurveyMaps(props: SurveyMapsProps) {
   const { collaboration, slug, canRefresh, stamp, onStarted } = props;
   const { data, error, mutate } = useSurveyMaps(collaboration, slug, stamp);
-  const [busy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   if (error !== undefined) {
     return (
       <Notice tone="bad" title="The maps could not be looked through.">
@@ -41,19 +40,12 @@ export function SurveyMaps(props: SurveyMapsProps) {
   const count = (standing: MapStanding) =>
     data.maps.filter((map) => map.standing === standing).length;
   const open = count('stale') + count('missing');
-  const refresh = async () => {
-    setBusy(true);
-    setRefusal(undefined);
-    try {
+  const refresh = () =>
+    perform(async () => {
       await startMaps(collaboration, slug);
       await mutate();
       onStarted?.();
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <div>
       <div className="mb-3 flex flex-wrap items-center justify-between gap-3">
@@ -68,7 +60,7 @@ export function SurveyMaps(props: SurveyMapsProps) {
         </p>
         {canRefresh && open > 0 && (
           <Button
-            isBusy={busy}
+            isBusy={isBusy}
             disabledReason={isOpen ? 'The maps are being computed.' : undefined}
             onClick={() => void refresh()}
           >
@@ -76,7 +68,7 @@ export function SurveyMaps(props: SurveyMapsProps) {
           </Button>
         )}
       </div>
-      {refusal !== undefined && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       <NotCurrent maps={data.maps.filter(({ standing }) => toDo.includes(standing))} />
     </div>
   );

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { type NoteText, useNameable } from '@/components/hooks/use-notes';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -27,24 +27,17 @@ export function NoteForm(props: NoteFormProps) {
     new Set(initial?.mentions.map(({ id }) => id)),
   );
   const [isBegun, setBegun] = useState(initial !== undefined);
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction();
   const people = useNameable(collaboration, isBegun);
   const isEmpty = body.trim() === '';
   const send = async () => {
     if (isEmpty || isBusy) return;
-    setBusy(true);
-    setRefusal(null);
-    try {
+    await perform(async () => {
       const isStored = await onSend({ body, mentions: mentionedIn(body, people, picked) });
-      if (isStored) {
-        setBody('');
-        setPicked(new Set());
-      }
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
+      if (!isStored) return;
+      setBody('');
+      setPicked(new Set());
+    });
   };
   return (
     <form
@@ -65,10 +58,10 @@ export function NoteForm(props: NoteFormProps) {
         onFocus={() => setBegun(true)}
         onSend={() => void send()}
       />
-      {refusal !== null && (
+      {problem !== undefined && (
         <div className="mt-2">
           <Notice tone="bad" title="Nothing was stored." isAnnounced>
-            {refusal}
+            {problem}
           </Notice>
         </div>
       )}

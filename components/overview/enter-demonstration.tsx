@@ -1,8 +1,7 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { enterDemonstration } from '@/components/hooks/use-demonstration';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -10,18 +9,9 @@ import { Notice } from '@/components/ui/notice';
 /** The way into the collaboration of invented data. */
 export function EnterDemonstration() {
   const router = useRouter();
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const enter = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      router.push(`/${(await enterDemonstration()).collaboration}`);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      setBusy(false);
-    }
-  };
+  const { perform, isBusy, problem } = useAction({ leaves: true });
+  const enter = () =>
+    perform(async () => router.push(`/${(await enterDemonstration()).collaboration}`));
   return (
     <div className="mt-4">
       <Button icon="eye" onClick={enter} isBusy={isBusy}>

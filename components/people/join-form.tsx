@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { acceptOffer, startSession } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { useSchemaForm } from '@/components/ui/form/use-schema-form';
@@ -20,23 +19,16 @@ interface JoinFormProps {
 
 /** Accepts an invitation: as the person signed in, by signing in first, or with a new account. */
 export function JoinForm({ code, offer, signedInAs }: JoinFormProps) {
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
-  const accept = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const { perform, isBusy, problem } = useAction({ leaves: true });
+  const accept = () =>
+    perform(async () => {
       const { slug } = await acceptOffer(code);
       window.location.assign(`/${slug}`);
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-      setBusy(false);
-    }
-  };
+    });
   if (signedInAs === offer.email) {
     return (
       <div className="flex flex-col gap-4">
-        {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+        {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
         <Button variant="primary" isWide isBusy={isBusy} onClick={() => void accept()}>
           Join {offer.collaboration}
         </Button>

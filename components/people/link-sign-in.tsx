@@ -1,6 +1,7 @@
 'use client';
 
 import { type FormEvent, useState } from 'react';
+import { useAction } from '@/components/hooks/use-action';
 import { startSessionByLink } from '@/components/hooks/use-sign-in';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -9,25 +10,23 @@ import { SecondFactorField } from './second-factor-field';
 
 /** Asks once, so that a program which follows links in mail uses none of them up. */
 export function LinkSignIn({ code }: { code: string }) {
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction({ leaves: true });
   const [isCodeAsked, setCodeAsked] = useState(false);
   const [secondFactor, setSecondFactor] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const enter = async (event: FormEvent) => {
+  const enter = (event: FormEvent) => {
     event.preventDefault();
-    setBusy(true);
-    setRefusal(null);
-    const sentence = await startSessionByLink(code, isCodeAsked ? secondFactor : undefined);
-    if (sentence === null) return window.location.assign('/');
-    if (sentence === CODE_IS_ASKED) setCodeAsked(true);
-    setRefusal(sentence);
-    setBusy(false);
+    void perform(async () => {
+      const sentence = await startSessionByLink(code, isCodeAsked ? secondFactor : undefined);
+      if (sentence === null) return window.location.assign('/');
+      if (sentence === CODE_IS_ASKED) setCodeAsked(true);
+      throw new Error(sentence);
+    });
   };
   return (
-    <form className="flex flex-col gap-4" onSubmit={(event) => void enter(event)}>
+    <form className="flex flex-col gap-4" onSubmit={enter}>
       {isCodeAsked && <SecondFactorField value={secondFactor} onChange={setSecondFactor} />}
-      {refusal !== null && refusal !== CODE_IS_ASKED && (
-        <Notice tone="bad" title={refusal} isAnnounced />
+      {problem !== undefined && problem !== CODE_IS_ASKED && (
+        <Notice tone="bad" title={problem} isAnnounced />
       )}
       <Button type="submit" variant="primary" isWide isBusy={isBusy}>
         Sign in

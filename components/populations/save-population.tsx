@@ -2,7 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { Button } from '@/components/ui/button';
 import { CheckboxField } from '@/components/ui/checkbox-field';
@@ -33,13 +33,10 @@ export function SavePopulation(props: SavePopulationProps) {
   const [name, setName] = useState(version ? `${version.name}, own` : '');
   const [note, setNote] = useState('');
   const [isShared, setShared] = useState(version?.isShared ?? canShare);
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
 
-  const save = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const save = () =>
+    perform(async () => {
       const saved =
         addsVersion && version
           ? await savePopulationVersion(collaboration, version.key, { note, definition })
@@ -53,12 +50,7 @@ export function SavePopulation(props: SavePopulationProps) {
       setOpen(false);
       router.push(`/${collaboration}/populations/${saved.key}`);
       router.refresh();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   const words = !version
     ? 'Save the population'
     : addsVersion

@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { sendBundle, useImports } from '@/components/hooks/use-releases';
 import { FileDrop } from '@/components/ui/file-drop';
 import { Link } from '@/components/ui/link';
@@ -42,20 +41,12 @@ export function BundlePanel({
 }) {
   const day = useDay();
   const { data: imports = initial, mutate } = useImports(collaboration, initial);
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const bring = async ([file]: File[]) => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const { perform, isBusy, problem } = useAction();
+  const bring = ([file]: File[]) =>
+    perform(async () => {
       await sendBundle(collaboration, file);
       await mutate();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <section className="min-w-0">
       <SectionOpener

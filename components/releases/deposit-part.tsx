@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { sendDeposit, useDeposit } from '@/components/hooks/use-deposits';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -54,19 +54,12 @@ export function DepositPart({
   const day = useDay();
   const { data: view = initial, mutate } = useDeposit(collaboration, release.id, initial);
   const [isAsking, setAsking] = useState(false);
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const send = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      await mutate(await sendDeposit(collaboration, release.id), { revalidate: false });
-      setAsking(false);
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      setAsking(false);
-    }
-    setBusy(false);
+    await perform(async () =>
+      mutate(await sendDeposit(collaboration, release.id), { revalidate: false }),
+    );
+    setAsking(false);
   };
   const { kind, words } = marks[view.state];
   const isUnderWay = view.state === 'waiting' || view.state === 'running';

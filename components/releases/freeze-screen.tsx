@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { bundleAddress, freezeRun } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
 import { FormulaWords } from '@/components/ui/formula-words';
@@ -33,23 +33,13 @@ export function FreezeScreen(props: FreezeScreenProps) {
   const { collaboration, initial, sentence, conditions, canRelease, links } = props;
   const [standing, setStanding] = useState(initial);
   const [reason, setReason] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const { run, checks, frozen } = standing;
   const name = `${run.analysisKey}, run ${run.number}`;
   const isStopped = checks.some(({ isMet, stops }) => stops && !isMet);
   const needsReason = checks.some(({ isMet }) => !isMet);
-  const freeze = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      setStanding(await freezeRun(collaboration, run.id, reason.trim()));
-    } catch (failure) {
-      setProblem(sentenceOf(failure));
-    } finally {
-      setBusy(false);
-    }
-  };
+  const freeze = () =>
+    perform(async () => setStanding(await freezeRun(collaboration, run.id, reason.trim())));
   return (
     <>
       <PageTitle

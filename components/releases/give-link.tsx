@@ -3,7 +3,7 @@
 import { useState } from 'react';
 import { useSWRConfig } from 'swr';
 import { apiPath } from '@/components/hooks/api-path';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { createGuestLink } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -27,27 +27,19 @@ export function GiveLink({
   const [label, setLabel] = useState('');
   const [days, setDays] = useState('60');
   const [address, setAddress] = useState<string>();
-  const [problem, setProblem] = useState<string>();
-  const [isBusy, setBusy] = useState(false);
+  const { perform, isBusy, problem, clear } = useAction();
   const close = () => {
     setOpen(false);
     setAddress(undefined);
     setLabel('');
-    setProblem(undefined);
+    clear();
   };
-  const give = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const give = () =>
+    perform(async () => {
       const made = await createGuestLink(collaboration, { label, days: Number(days), ...target });
       setAddress(made.address);
       await mutate(apiPath(collaboration, 'guest-links'));
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <>
       <Button icon="link" onClick={() => setOpen(true)}>

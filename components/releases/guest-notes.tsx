@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { writeGuestNote } from '@/components/hooks/use-releases';
 import { formatDay } from '@/components/runs/time-words';
 import { Button } from '@/components/ui/button';
@@ -16,21 +16,13 @@ export function GuestNotes({ token, guest }: { token: string; guest: GuestPage['
   const [notes, setNotes] = useState(guest.notes);
   const [name, setName] = useState('');
   const [body, setBody] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const send = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const { perform, isBusy, problem } = useAction();
+  const send = () =>
+    perform(async () => {
       const { createdAt: at, ...note } = await writeGuestNote(token, { name, body });
       setNotes([...notes, { ...note, at }]);
       setBody('');
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <section className="mt-9 print:hidden">
       <SectionOpener

@@ -2,7 +2,7 @@
 
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import {
   type ReleaseStep,
   removeRelease,
@@ -45,28 +45,20 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
   const { collaboration, initial, links, address, deposit } = props;
   const router = useRouter();
   const { data: release = initial, mutate } = useRelease(collaboration, initial);
-  const [busy, setBusy] = useState<string>();
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
+  const [pressed, setPressed] = useState<ReleaseStep | 'withdraw'>();
+  const busy = isBusy ? pressed : undefined;
   const [isWithdrawing, setWithdrawing] = useState(false);
   const [reason, setReason] = useState('');
   const { kind, words } = stateWords[release.state];
-  const perform = async (name: string, task: () => Promise<ReleaseView>) => {
-    setBusy(name);
-    setProblem(undefined);
-    try {
-      await mutate(await task(), { revalidate: false });
-      return true;
-    } catch (failure) {
-      setProblem(sentenceOf(failure));
-      return false;
-    } finally {
-      setBusy(undefined);
-    }
+  const change = (name: ReleaseStep | 'withdraw', task: () => Promise<ReleaseView>) => {
+    setPressed(name);
+    return perform(async () => mutate(await task(), { revalidate: false }));
   };
   const step = (name: ReleaseStep) =>
-    void perform(name, () => takeStep(collaboration, release.id, name));
+    void change(name, () => takeStep(collaboration, release.id, name));
   const withdraw = async () => {
-    const isDone = await perform('withdraw', () =>
+    const isDone = await change('withdraw', () =>
       withdrawRelease(collaboration, release.id, reason.trim()),
     );
     if (isDone) setWithdrawing(false);

@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { askStudy } from '@/components/hooks/use-studies';
 import { questionAddress } from '@/components/studies/kind-words';
 import { Link } from '@/components/ui/link';
@@ -23,20 +22,13 @@ interface AgesCoolingOfferProps {
 /** In the place of the two controls, until their maps are kept with the run. */
 export function AgesCoolingOffer(props: AgesCoolingOfferProps) {
   const { collaboration, run, open, canAsk, onAsked } = props;
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const ask = async () => {
     if (isBusy) return;
-    setBusy(true);
-    setProblem(undefined);
-    try {
+    await perform(async () => {
       await askStudy(collaboration, run.id, { kind: 'ages-cooling' });
       onAsked();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
+    });
   };
   const address = questionAddress(collaboration, run.analysis.key, 'ages-cooling');
   const isOnItsWay = open?.job.status === 'waiting' || open?.job.status === 'running';

@@ -1,8 +1,7 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { removeAnalysis } from '@/components/hooks/use-analyses';
 import { startRun } from '@/components/hooks/use-runs';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
@@ -31,23 +30,15 @@ interface NoRunPlateProps {
 /** The question stands, its answer does not yet: a dotted posterior and the way to it. */
 export function NoRunPlate({ collaboration, analysis, isOnItsWay, onChanged }: NoRunPlateProps) {
   const router = useRouter();
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const { recipe, population, surveys } = analysis;
   const quantity = quantityOf(recipe.likelihood);
 
-  const run = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const run = () =>
+    perform(async () => {
       await startRun(collaboration, analysis.key);
       onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
 
   return (
     <>

@@ -1,5 +1,5 @@
 import { type ReactNode, useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { TextField } from '@/components/ui/text-field';
@@ -35,30 +35,23 @@ export function useVersionSave<View extends Versioned>(
 ): VersionSave<View> {
   const [open, setOpen] = useState<View>();
   const [name, rename] = useState('');
-  const [busy, setBusy] = useState<'new' | 'version'>();
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem, clear } = useAction();
+  const [pressed, setPressed] = useState<'new' | 'version'>();
   return {
     open,
     name,
     rename,
-    busy,
+    busy: isBusy ? pressed : undefined,
     problem,
     show(view) {
       setOpen(view);
       rename(view?.name ?? '');
-      setProblem(undefined);
+      clear();
     },
     close: () => setOpen(undefined),
     async save(versionOf) {
-      setBusy(versionOf === undefined ? 'new' : 'version');
-      setProblem(undefined);
-      try {
-        setOpen(await store({ name, versionOf }));
-      } catch (reason) {
-        setProblem(sentenceOf(reason));
-      } finally {
-        setBusy(undefined);
-      }
+      setPressed(versionOf === undefined ? 'new' : 'version');
+      await perform(async () => setOpen(await store({ name, versionOf })));
     },
   };
 }

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { type Action, useAction } from '@/components/hooks/use-action';
 import {
   askForDeletion,
   askForExport,
@@ -25,29 +25,25 @@ export function LeavingPart({
   initial: LeavingView;
 }) {
   const { data: view = initial, mutate } = useLeaving(collaboration, initial);
-  const [busy, setBusy] = useState<string>();
-  const [problem, setProblem] = useState<{ of: string; words: string }>();
+  const packing = useAction();
+  const deletion = useAction();
+  const keeping = useAction();
   const [isAsking, setAsking] = useState(false);
   const moment = useMoment();
-  const perform = async (name: string, task: () => Promise<LeavingView>) => {
-    setBusy(name);
-    setProblem(undefined);
-    try {
-      await mutate(await task(), { revalidate: false });
-    } catch (reason) {
-      setProblem({ of: name, words: sentenceOf(reason) });
-    }
-    setBusy(undefined);
+  const perform = async (action: Action, task: () => Promise<LeavingView>) => {
+    for (const one of [packing, deletion, keeping]) one.clear();
+    await action.perform(async () => mutate(await task(), { revalidate: false }));
     setAsking(false);
   };
   const isPacking = view.exports.some(({ status }) => status === 'waiting' || status === 'running');
-  const refusal = (
-    <div className="mb-3">
-      <Notice tone="bad" title="It was not done." isAnnounced>
-        {problem?.words}
-      </Notice>
-    </div>
-  );
+  const refusal = (problem: string | undefined) =>
+    problem !== undefined && (
+      <div className="mb-3">
+        <Notice tone="bad" title="It was not done." isAnnounced>
+          {problem}
+        </Notice>
+      </div>
+    );
   return (
     <>
       <section className="min-w-0">
@@ -56,11 +52,11 @@ export function LeavingPart({
           One archive with every table as JSON, every uploaded file as it came, and the files of
           each release. It holds no password and no token.
         </p>
-        {problem?.of === 'export' && refusal}
+        {refusal(packing.problem)}
         <Button
           icon="download"
-          onClick={() => void perform('export', () => askForExport(collaboration))}
-          isBusy={busy === 'export'}
+          onClick={() => void perform(packing, () => askForExport(collaboration))}
+          isBusy={packing.isBusy}
           disabledReason={isPacking ? 'An archive is being made.' : undefined}
         >
           Make an archive
@@ -69,7 +65,7 @@ export function LeavingPart({
       </section>
       <section className="min-w-0">
         <SectionOpener title="Delete the collaboration" />
-        {problem && problem.of !== 'export' && refusal}
+        {refusal(deletion.problem ?? keeping.problem)}
         {view.deletion ? (
           <>
             <Notice tone="warn" title={`It will be deleted on ${moment(view.deletion.dueAt)}.`}>
@@ -79,8 +75,8 @@ export function LeavingPart({
             <div className="mt-3">
               <Button
                 icon="undo"
-                onClick={() => void perform('cancel', () => cancelDeletion(collaboration))}
-                isBusy={busy === 'cancel'}
+                onClick={() => void perform(keeping, () => cancelDeletion(collaboration))}
+                isBusy={keeping.isBusy}
               >
                 Keep the collaboration
               </Button>
@@ -98,9 +94,9 @@ export function LeavingPart({
         <LeavingDialog
           view={view}
           isOpen={isAsking}
-          isBusy={busy === 'delete'}
+          isBusy={deletion.isBusy}
           onClose={() => setAsking(false)}
-          onDelete={(name) => void perform('delete', () => askForDeletion(collaboration, name))}
+          onDelete={(name) => void perform(deletion, () => askForDeletion(collaboration, name))}
         />
       </section>
     </>

@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { SelectField } from '@/components/ui/select-field';
@@ -17,7 +18,7 @@ export function PlaceForm({ settings, save, zones }: SettingsPartProps & { zones
   const [name, setName] = useState(settings.name);
   const [slug, setSlug] = useState(settings.slug);
   const [timeZone, setTimeZone] = useState(settings.timeZone);
-  const [isBusy, setBusy] = useState(false);
+  const { perform, isBusy } = useAction();
   const isLocked = !settings.can.manage;
   const isChanged =
     name !== settings.name || slug !== settings.slug || timeZone !== settings.timeZone;
@@ -26,10 +27,7 @@ export function PlaceForm({ settings, save, zones }: SettingsPartProps & { zones
       className="flex max-w-[440px] flex-col gap-4"
       onSubmit={(event) => {
         event.preventDefault();
-        setBusy(true);
-        void save({ name, slug, timeZone }, 'Name and dates are saved.').finally(() =>
-          setBusy(false),
-        );
+        void perform(() => save({ name, slug, timeZone }, 'Name and dates are saved.'));
       }}
     >
       <TextField

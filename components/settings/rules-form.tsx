@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from '@/components/ui/button';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
@@ -23,7 +24,7 @@ export function RulesForm({
   const [rule, setRule] = useState(settings.combination);
   const [level, setLevel] = useState(String(Number((100 * settings.credibleLevel).toFixed(6))));
   const [two, setTwo] = useState(twoOf(settings.needsTwoPeopleChosen));
-  const [isBusy, setBusy] = useState(false);
+  const { perform, isBusy } = useAction();
   const isLocked = !settings.can.manage;
   const percent = Number(level);
   const isLevel = percent > 0 && percent < 100;
@@ -39,9 +40,7 @@ export function RulesForm({
       className="flex max-w-[520px] flex-col gap-4"
       onSubmit={(event) => {
         event.preventDefault();
-        if (!isLevel) return;
-        setBusy(true);
-        void save(change, 'The rules are saved.').finally(() => setBusy(false));
+        if (isLevel) void perform(() => save(change, 'The rules are saved.'));
       }}
     >
       <SelectField

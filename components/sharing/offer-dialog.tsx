@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { offerSurvey } from '@/components/hooks/use-sharing';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -30,26 +30,19 @@ export function OfferDialog({ collaboration, survey, onClose, onOffered }: Offer
   const [scope, setScope] = useState<ShareScope>('whole');
   const [attribution, setAttribution] = useState('');
   const [note, setNote] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction({ leaves: true });
   const missing =
     code.trim() === ''
       ? 'Enter the sharing code of the other collaboration'
       : attribution.trim() === ''
         ? 'State how results that use it name its source'
         : undefined;
-  const offer = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const offer = () =>
+    perform(async () => {
       await offerSurvey(collaboration, survey.slug, { code, scope, attribution, note });
       onOffered();
       onClose();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-      setBusy(false);
-    }
-  };
+    });
   return (
     <Dialog
       isOpen
@@ -101,7 +94,7 @@ export function OfferDialog({ collaboration, survey, onClose, onOffered }: Offer
           value={note}
           onChange={(event) => setNote(event.target.value)}
         />
-        {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+        {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       </div>
     </Dialog>
   );

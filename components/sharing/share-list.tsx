@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { acceptShare, refuseShare } from '@/components/hooks/use-sharing';
 import { ReasonDialog } from '@/components/stars/reason-dialog';
 import { Button } from '@/components/ui/button';
@@ -22,26 +22,21 @@ interface ShareListProps {
 
 /** Offers, each with what it holds, on which terms, and where it stands. */
 export function ShareList({ collaboration, shares, onChanged }: ShareListProps) {
-  const [busy, setBusy] = useState<string | null>(null);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction();
+  const [pressed, setPressed] = useState<string>();
   const [asked, setAsked] = useState<{ share: ShareView; verb: 'refuse' | 'withdraw' } | null>(
     null,
   );
-  const accept = async (share: ShareView) => {
-    setBusy(share.id);
-    setRefusal(null);
-    try {
+  const accept = (share: ShareView) => {
+    setPressed(share.id);
+    return perform(async () => {
       await acceptShare(collaboration, share.id);
       onChanged();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-    } finally {
-      setBusy(null);
-    }
+    });
   };
   return (
     <>
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       <ul>
         {shares.map((share) => (
           <li key={share.id} className="grid gap-x-6 gap-y-2 border-rule border-b py-3 md:flex">
@@ -69,7 +64,10 @@ export function ShareList({ collaboration, shares, onChanged }: ShareListProps) 
             <div className="flex flex-wrap items-center gap-x-4 gap-y-2 self-start">
               {share.can.accept && (
                 <>
-                  <Button isBusy={busy === share.id} onClick={() => void accept(share)}>
+                  <Button
+                    isBusy={isBusy && pressed === share.id}
+                    onClick={() => void accept(share)}
+                  >
                     Accept<span className="sr-only"> {share.survey.name}</span>
                   </Button>
                   <TextAction onClick={() => setAsked({ share, verb: 'refuse' })}>

@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { refreshShare } from '@/components/hooks/use-sharing';
 import { Notice } from '@/components/ui/notice';
 import { TextAction } from '@/components/ui/text-action';
@@ -22,21 +21,13 @@ export function SharedNotice({
   onRefreshed(): void;
 }) {
   const day = useDay();
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction();
   const { owner, scope, attribution, copiedAt, version, withdrawnFrom, withdrawnWhy } = shared;
-  const refresh = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const refresh = () =>
+    perform(async () => {
       await refreshShare(collaboration, shared.shareId);
       onRefreshed();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-    } finally {
-      setBusy(false);
-    }
-  };
+    });
   return (
     <div className="my-3 grid gap-2">
       <Notice tone="neutral" title={`Shared by ${owner}, read only.`}>
@@ -73,7 +64,7 @@ export function SharedNotice({
           Earlier runs keep the version that they used.
         </Notice>
       )}
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
     </div>
   );
 }

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { withdrawShare } from '@/components/hooks/use-sharing';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -24,22 +24,15 @@ export function WithdrawShareDialog(props: WithdrawShareDialogProps) {
   const { collaboration, share, onClose, onWithdrawn } = props;
   const [why, setWhy] = useState(share.withdrawnWhy ?? '');
   const [from, setFrom] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction({ leaves: true });
   const isOffer = share.copiedAt === null;
-  const withdraw = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const withdraw = () =>
+    perform(async () => {
       const body = { why: why.trim(), ...(from !== '' && { from }) };
       await withdrawShare(collaboration, share.id, body);
       onWithdrawn();
       onClose();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-      setBusy(false);
-    }
-  };
+    });
   return (
     <Dialog
       isOpen
@@ -81,7 +74,7 @@ export function WithdrawShareDialog(props: WithdrawShareDialogProps) {
           maxLength={300}
           onChange={(event) => setWhy(event.target.value)}
         />
-        {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+        {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       </div>
     </Dialog>
   );

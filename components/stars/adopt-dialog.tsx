@@ -2,6 +2,7 @@
 
 import { type ReactNode, useEffect, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { adoptValues, previewAdoption } from '@/components/hooks/use-adoption';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -27,20 +28,14 @@ interface AdoptDialogProps {
 export function AdoptDialog(props: AdoptDialogProps) {
   const { collaboration, title, choices, missing, children, onClose, onAdopted } = props;
   const [why, setWhy] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction({ leaves: true });
   const adopt = async () => {
     if (choices === null) return;
-    setBusy(true);
-    setRefusal(null);
-    try {
+    await perform(async () => {
       await adoptValues(collaboration, { ...choices, why: why.trim() } as AdoptMany);
       onAdopted();
       onClose();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-      setBusy(false);
-    }
+    });
   };
   const lacking =
     choices === null
@@ -76,7 +71,7 @@ export function AdoptDialog(props: AdoptDialogProps) {
           maxLength={300}
           onChange={(event) => setWhy(event.target.value)}
         />
-        {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+        {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       </div>
     </Dialog>
   );

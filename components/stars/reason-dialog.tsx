@@ -1,7 +1,7 @@
 'use client';
 
 import { type ReactNode, useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
 import { Notice } from '@/components/ui/notice';
@@ -29,19 +29,12 @@ export function ReasonDialog({
   onDecide,
 }: ReasonDialogProps) {
   const [why, setWhy] = useState('');
-  const [isBusy, setBusy] = useState(false);
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const decide = async () => {
-    setBusy(true);
-    setRefusal(null);
-    try {
+  const { perform, isBusy, problem } = useAction({ leaves: true });
+  const decide = () =>
+    perform(async () => {
       await onDecide(why.trim());
       onClose();
-    } catch (failure) {
-      setRefusal(sentenceOf(failure));
-      setBusy(false);
-    }
-  };
+    });
   return (
     <Dialog
       isOpen
@@ -70,9 +63,9 @@ export function ReasonDialog({
         maxLength={300}
         onChange={(event) => setWhy(event.target.value)}
       />
-      {refusal !== null && (
+      {problem !== undefined && (
         <div className="mt-3">
-          <Notice tone="bad" title={refusal} isAnnounced />
+          <Notice tone="bad" title={problem} isAnnounced />
         </div>
       )}
     </Dialog>

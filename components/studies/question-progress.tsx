@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { cancelJob, retryJob } from '@/components/hooks/use-runs';
 import { removeStudy } from '@/components/hooks/use-studies';
 import { formatDuration } from '@/components/runs/time-words';
@@ -26,7 +25,12 @@ interface QuestionProgressProps {
 export function QuestionProgress(props: QuestionProgressProps) {
   const { collaboration, study, name, canStop, onChanged } = props;
   const { job } = study;
-  const { perform, isBusy, problem } = useJobAction(onChanged);
+  const { perform, isBusy, problem } = useAction();
+  const stop = () =>
+    perform(async () => {
+      await cancelJob(collaboration, job.id);
+      onChanged();
+    });
   const isWaiting = job.status === 'waiting';
   return (
     <section aria-label={`${name}, on its way`} aria-live="polite">
@@ -39,11 +43,7 @@ export function QuestionProgress(props: QuestionProgressProps) {
         time={job.timeLeftS === null ? '' : `about ${formatDuration(job.timeLeftS)} left`}
         action={
           canStop ? (
-            <Button
-              size="small"
-              onClick={() => perform(() => cancelJob(collaboration, job.id))}
-              isBusy={isBusy || job.cancelRequested}
-            >
+            <Button size="small" onClick={stop} isBusy={isBusy || job.cancelRequested}>
               {job.cancelRequested ? 'Stopping' : 'Stop'}
             </Button>
           ) : undefined
@@ -68,8 +68,18 @@ interface QuestionEndedProps extends QuestionProgressProps {
 /** A question that ended without an answer: why, and what mends it. */
 export function QuestionEnded(props: QuestionEndedProps) {
   const { collaboration, study, name, canStop, mend, onChanged, onDeleted } = props;
-  const { perform, isBusy, problem } = useJobAction(onChanged);
-  const deletion = useJobAction(onDeleted);
+  const retrying = useAction();
+  const deletion = useAction();
+  const retry = () =>
+    retrying.perform(async () => {
+      await retryJob(collaboration, study.job.id);
+      onChanged();
+    });
+  const remove = () =>
+    deletion.perform(async () => {
+      await removeStudy(collaboration, study.id);
+      onDeleted();
+    });
   const wasStopped = study.job.status === 'cancelled';
   const fault = study.job.fault ?? 'It gave no reason.';
   return (
@@ -80,48 +90,23 @@ export function QuestionEnded(props: QuestionEndedProps) {
       actions={
         <>
           {canStop && (
-            <TextAction
-              icon="undo"
-              aria-disabled={isBusy}
-              onClick={() => perform(() => retryJob(collaboration, study.job.id))}
-            >
+            <TextAction icon="undo" aria-disabled={retrying.isBusy} onClick={retry}>
               {wasStopped ? 'Compute it after all' : 'Retry'}
             </TextAction>
           )}
           {study.can.remove && (
-            <TextAction
-              aria-disabled={deletion.isBusy}
-              onClick={() => deletion.perform(() => removeStudy(collaboration, study.id))}
-            >
+            <TextAction aria-disabled={deletion.isBusy} onClick={remove}>
               Delete the question
             </TextAction>
           )}
         </>
       }
     >
-      {problem ??
+      {retrying.problem ??
         deletion.problem ??
         (wasStopped ? 'Nothing of it was stored.' : [fault, mend].filter(Boolean).join(' '))}
     </Notice>
   );
-}
-
-function useJobAction(onChanged: () => void) {
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
-  const perform = async (action: () => Promise<unknown>) => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
-      await action();
-      onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    } finally {
-      setBusy(false);
-    }
-  };
-  return { perform, isBusy, problem };
 }
 
 /** A stage's key as words: "limit-map" reads "Limit map". */

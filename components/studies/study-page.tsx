@@ -2,7 +2,8 @@
 
 import { useState } from 'react';
 import { FigureFrame } from '@/components/figures/figure-frame';
-import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { askStudy, useStudiesOfKind, useStudy } from '@/components/hooks/use-studies';
 import { useUnpackedRun } from '@/components/hooks/use-unpacked';
@@ -11,7 +12,6 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
-import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
@@ -48,8 +48,7 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
   const run = useUnpackedRun(props.run);
   const entry = kinds[kind];
   const [chosenId, setChosenId] = useState(props.answerId);
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
+  const { perform, isBusy, problem, faults } = useAction();
   const { data: all, error, mutate } = useStudiesOfKind(collaboration, kind, first.studies);
   const studies = all?.filter((study) => study.run.analysisKey === analysis.key);
   const open = studies?.filter(({ job }) => job.status === 'waiting' || job.status === 'running');
@@ -69,18 +68,11 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
 
   const ask = async (settings: SettingsOf<Kind>) => {
     if (!run) return;
-    setBusy(true);
-    setProblem(undefined);
-    try {
+    await perform(async () => {
       const begun = await askStudy(collaboration, run.id, settings);
       setChosenId(begun.job.status === 'done' ? begun.id : undefined);
       await mutate();
-    } catch (reason) {
-      const faults = reason instanceof ApiProblem ? reason.faults : [];
-      setProblem({ sentence: sentenceOf(reason), faults });
-    } finally {
-      setBusy(false);
-    }
+    });
   };
   const nameOf = ({ settings }: StudySummary) =>
     `${kindWords[settings.kind].title.toLowerCase()}, ${settingsInWords(settings)}`;
@@ -118,12 +110,12 @@ export function StudyPage<Kind extends StudyKind>(props: StudyPageProps<Kind>) {
               start={answer?.settings}
               isBusy={isBusy}
               disabledReason={canAsk ? undefined : cannotAsk}
-              faults={problem?.faults ?? []}
+              faults={faults}
               onAsk={ask}
             />
-            {problem !== undefined && problem.faults.length === 0 && (
+            {problem !== undefined && faults.length === 0 && (
               <Notice tone="bad" title="It was not asked." isAnnounced>
-                {problem.sentence}
+                {problem}
               </Notice>
             )}
             {open?.map((one) => (

@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from './button';
 import { Notice } from './notice';
 import { TextAction } from './text-action';
@@ -22,20 +22,13 @@ interface DeleteForGoodProps {
 export function DeleteForGood(props: DeleteForGoodProps) {
   const { label, warning, onDelete, onDeleted, onRefused } = props;
   const [isAsked, setAsked] = useState(false);
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const remove = async () => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+    const isDone = await perform(async () => {
       await onDelete();
       onDeleted();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-      onRefused?.();
-    } finally {
-      setBusy(false);
-    }
+    });
+    if (!isDone) onRefused?.();
   };
 
   if (!isAsked) {

@@ -1,7 +1,6 @@
 'use client';
 
-import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { cancelJob, retryJob } from '@/components/hooks/use-runs';
 import { formatDuration } from '@/components/runs/time-words';
 import { Icon } from '@/components/ui/icon';
@@ -34,21 +33,14 @@ function stateWords(job: JobView): string {
 
 /** One computation in the list of the bar: what it is, how far, and the verb that fits its state. */
 export function JobRow({ collaboration, job, onChanged }: JobRowProps) {
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem } = useAction();
   const mark = marks[job.status];
   const title = jobTitle(job);
-  const act = async (work: () => Promise<unknown>) => {
-    setBusy(true);
-    setProblem(undefined);
-    try {
+  const act = (work: () => Promise<unknown>) =>
+    perform(async () => {
       await work();
       onChanged();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    }
-    setBusy(false);
-  };
+    });
   const share = job.total > 0 ? Math.min(1, job.done / job.total) : 0;
   return (
     <li className="grid grid-cols-[20px_minmax(0,1fr)_auto] gap-x-2.5 border-rule border-b py-2.5 text-note last:border-0">

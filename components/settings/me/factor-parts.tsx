@@ -1,7 +1,7 @@
 'use client';
 
-import { type FormEvent, type ReactNode, useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import type { FormEvent, ReactNode } from 'react';
+import { useAction } from '@/components/hooks/use-action';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PasswordField } from '@/components/ui/password-field';
@@ -43,25 +43,17 @@ interface FactorFormProps {
 
 /** One step of the second factor: fields, a button, and what was refused. */
 export function FactorForm({ button, onSend, children }: FactorFormProps) {
-  const [refusal, setRefusal] = useState<string | null>(null);
-  const [isBusy, setBusy] = useState(false);
-  const send = async (event: FormEvent<HTMLFormElement>) => {
+  const { perform, isBusy, problem } = useAction();
+  const send = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault();
     const given = new FormData(event.currentTarget);
     const text = (name: string) => String(given.get(name) ?? '');
-    setRefusal(null);
-    setBusy(true);
-    try {
-      await onSend({ password: text('password'), code: text('code') });
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
+    void perform(() => onSend({ password: text('password'), code: text('code') }));
   };
   return (
-    <form className="flex flex-col gap-4" onSubmit={(event) => void send(event)}>
+    <form className="flex flex-col gap-4" onSubmit={send}>
       {children}
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       <div>
         <Button type="submit" isBusy={isBusy}>
           {button}

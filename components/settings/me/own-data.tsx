@@ -1,7 +1,7 @@
 'use client';
 
 import { useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { deleteAccount, fetchOwnData } from '@/components/hooks/use-leaving';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -20,31 +20,25 @@ function save(file: Blob, name: string): void {
 
 /** What is stored about the person, and the end of the account. */
 export function OwnData() {
-  const [busy, setBusy] = useState<string>();
-  const [problem, setProblem] = useState<string>();
+  const { perform, isBusy, problem, clear } = useAction();
+  const [pressed, setPressed] = useState<'data' | 'delete'>();
   const [isAsking, setAsking] = useState(false);
   const [password, setPassword] = useState('');
-  const perform = async (name: string, task: () => Promise<void>) => {
-    setBusy(name);
-    setProblem(undefined);
-    try {
-      await task();
-    } catch (reason) {
-      setProblem(sentenceOf(reason));
-    }
-    setBusy(undefined);
+  const fetchIt = () => {
+    setPressed('data');
+    void perform(async () => save(await fetchOwnData(), 'rarebound-my-data.json'));
   };
-  const fetchIt = () =>
-    perform('data', async () => save(await fetchOwnData(), 'rarebound-my-data.json'));
-  const remove = () =>
-    perform('delete', async () => {
+  const remove = () => {
+    setPressed('delete');
+    void perform(async () => {
       await deleteAccount(password);
       window.location.assign('/sign-in');
     });
+  };
   const close = () => {
     setAsking(false);
     setPassword('');
-    setProblem(undefined);
+    clear();
   };
   const refusal = problem !== undefined && (
     <Notice tone="bad" title="It was not done." isAnnounced>
@@ -58,7 +52,7 @@ export function OwnData() {
       </p>
       {!isAsking && refusal}
       <div className="flex flex-wrap gap-2">
-        <Button icon="download" onClick={() => void fetchIt()} isBusy={busy === 'data'}>
+        <Button icon="download" onClick={fetchIt} isBusy={isBusy && pressed === 'data'}>
           Fetch your data
         </Button>
         <Button variant="quiet" onClick={() => setAsking(true)}>
@@ -73,8 +67,8 @@ export function OwnData() {
           <>
             <Button
               variant="primary"
-              onClick={() => void remove()}
-              isBusy={busy === 'delete'}
+              onClick={remove}
+              isBusy={isBusy && pressed === 'delete'}
               disabledReason={password === '' ? 'Give your password.' : undefined}
             >
               Delete it now

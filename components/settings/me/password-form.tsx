@@ -1,7 +1,7 @@
 'use client';
 
 import { type FormEvent, useState } from 'react';
-import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { changePassword } from '@/components/hooks/use-me';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
@@ -9,28 +9,22 @@ import { PasswordField } from '@/components/ui/password-field';
 
 /** A new password; every other session ends with it. */
 export function PasswordForm({ onChanged }: { onChanged(): void }) {
-  const [refusal, setRefusal] = useState<string | null>(null);
+  const { perform, isBusy, problem } = useAction();
   const [isSaved, setSaved] = useState(false);
-  const [isBusy, setBusy] = useState(false);
-  const save = async (event: FormEvent<HTMLFormElement>) => {
+  const save = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault();
     const form = event.currentTarget;
     const given = new FormData(form);
-    setRefusal(null);
     setSaved(false);
-    setBusy(true);
-    try {
+    void perform(async () => {
       await changePassword(String(given.get('current')), String(given.get('next')));
       form.reset();
       setSaved(true);
       onChanged();
-    } catch (reason) {
-      setRefusal(sentenceOf(reason));
-    }
-    setBusy(false);
+    });
   };
   return (
-    <form className="flex max-w-[440px] flex-col gap-4" onSubmit={(event) => void save(event)}>
+    <form className="flex max-w-[440px] flex-col gap-4" onSubmit={save}>
       <PasswordField
         label="Your password now"
         name="current"
@@ -46,7 +40,7 @@ export function PasswordForm({ onChanged }: { onChanged(): void }) {
         maxLength={128}
         required
       />
-      {refusal !== null && <Notice tone="bad" title={refusal} isAnnounced />}
+      {problem !== undefined && <Notice tone="bad" title={problem} isAnnounced />}
       {isSaved && (
         <Notice tone="ok" title="The new password holds." isAnnounced>
           Every other session has ended.

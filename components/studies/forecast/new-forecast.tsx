@@ -3,7 +3,8 @@
 import dynamic from 'next/dynamic';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
-import { ApiProblem, sentenceOf } from '@/components/hooks/api-problem';
+import { sentenceOf } from '@/components/hooks/api-problem';
+import { useAction } from '@/components/hooks/use-action';
 import { usePopulations } from '@/components/hooks/use-populations';
 import { useRun } from '@/components/hooks/use-runs';
 import { askStudy } from '@/components/hooks/use-studies';
@@ -15,7 +16,6 @@ import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';
-import type { Fault } from '@/lib/errors';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
@@ -47,8 +47,7 @@ export function NewForecast(props: NewForecastProps) {
   const { collaboration, bases, first, start, disabledReason } = props;
   const router = useRouter();
   const [key, setKey] = useState(first?.key ?? '');
-  const [isBusy, setBusy] = useState(false);
-  const [problem, setProblem] = useState<{ sentence: string; faults: Fault[] }>();
+  const { perform, isBusy, problem, faults } = useAction({ leaves: true });
   const analysis = bases.find((one) => one.key === key);
   const firstRun = useUnpackedRun(first?.run ?? null);
   const { data: run, error } = useRun(
@@ -65,16 +64,10 @@ export function NewForecast(props: NewForecastProps) {
 
   const ask = async (settings: SettingsOf<'forecast'>) => {
     if (!run) return;
-    setBusy(true);
-    setProblem(undefined);
-    try {
+    await perform(async () => {
       const begun = await askStudy(collaboration, run.id, settings);
       router.push(`/${collaboration}/forecasts/${begun.id}`);
-    } catch (reason) {
-      const faults = reason instanceof ApiProblem ? reason.faults : [];
-      setProblem({ sentence: sentenceOf(reason), faults });
-      setBusy(false);
-    }
+    });
   };
 
   return (
@@ -126,7 +119,7 @@ export function NewForecast(props: NewForecastProps) {
               start={start}
               isBusy={isBusy}
               disabledReason={disabledReason}
-              faults={problem?.faults ?? []}
+              faults={faults}
               onAsk={ask}
             />
           ) : (
@@ -136,9 +129,9 @@ export function NewForecast(props: NewForecastProps) {
               </p>
             )
           )}
-          {problem !== undefined && problem.faults.length === 0 && (
+          {problem !== undefined && faults.length === 0 && (
             <Notice tone="bad" title="It was not asked." isAnnounced>
-              {problem.sentence}
+              {problem}
             </Notice>
           )}
         </div>
