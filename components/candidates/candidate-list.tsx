@@ -6,11 +6,12 @@ import { useAddressQuery } from '@/components/hooks/use-address-query';
 import { CANDIDATES_SHOWN, useCandidates } from '@/components/hooks/use-candidates';
 import { EmptyState } from '@/components/ui/empty-state';
 import { Link } from '@/components/ui/link';
+import { JupiterMass } from '@/components/ui/notation';
 import { Notice } from '@/components/ui/notice';
 import { SelectField } from '@/components/ui/select-field';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import type { CandidateList, CandidateView, CompanionStatus } from '@/lib/schemas/candidates';
 import { readStatus, statuses, statusMarks, statusWords } from './status-words';
 import { withErrors } from './verdict-history';
@@ -27,6 +28,48 @@ function rangesOf({ isInsideRanges }: CandidateView): string {
   return isInsideRanges ? 'inside' : 'outside';
 }
 
+const massOf = ({ massMjup, massErrorsMjup }: CandidateView) =>
+  massMjup === null ? '–' : withErrors(massMjup, massErrorsMjup, '');
+
+const axisOf = ({ semiMajorAxisAu, semiMajorAxisErrorsAu }: CandidateView) =>
+  semiMajorAxisAu === null ? '–' : withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, '');
+
+/** Columns that narrower screens fold under the name. */
+const fromMiddle = 'max-md:hidden';
+const fromBroad = 'max-lg:hidden';
+const fromWide = 'max-xl:hidden';
+
+/** Under the name: what the columns that are left out would hold. */
+function FoldedValues({ candidate, lead }: { candidate: CandidateView; lead: string | null }) {
+  const { survey, massMjup, semiMajorAxisAu, probability, isInsideRanges } = candidate;
+  return (
+    <span className="block whitespace-normal font-normal text-chart text-ink2 xl:hidden">
+      <span className="block lg:hidden">{survey.name}</span>
+      {massMjup !== null && (
+        <span className="block md:hidden">
+          {massOf(candidate)}
+          {THIN_SPACE}
+          <JupiterMass />
+        </span>
+      )}
+      {semiMajorAxisAu !== null && (
+        <span className="block md:hidden">
+          {axisOf(candidate)}
+          {THIN_SPACE}AU
+        </span>
+      )}
+      {probability !== null && (
+        <span className="block">probability of being bound {formatPlain(probability)}</span>
+      )}
+      {isInsideRanges !== null && (
+        <span className="block">
+          {rangesOf(candidate)} the ranges of {lead ?? 'the lead analysis'}
+        </span>
+      )}
+    </span>
+  );
+}
+
 function CandidateTable({
   collaboration,
   candidates,
@@ -41,15 +84,21 @@ function CandidateTable({
       <TableHead>
         <Row>
           <HeadCell>candidate</HeadCell>
-          <HeadCell>survey</HeadCell>
+          <HeadCell className={fromBroad}>survey</HeadCell>
           <HeadCell>status</HeadCell>
-          <HeadCell isNumeric>epochs</HeadCell>
-          <HeadCell isNumeric>
-            mass, M<sub>J</sub>
+          <HeadCell isNumeric className={fromWide}>
+            epochs
           </HeadCell>
-          <HeadCell isNumeric>semi-major axis, AU</HeadCell>
-          <HeadCell isNumeric>probability of being bound</HeadCell>
-          <HeadCell>{lead === null ? 'ranges' : `ranges of ${lead}`}</HeadCell>
+          <HeadCell isNumeric className={fromMiddle}>
+            mass, <JupiterMass />
+          </HeadCell>
+          <HeadCell isNumeric className={fromMiddle}>
+            semi-major axis, AU
+          </HeadCell>
+          <HeadCell isNumeric className={fromWide}>
+            probability of being bound
+          </HeadCell>
+          <HeadCell className={fromWide}>{lead === null ? 'ranges' : `ranges of ${lead}`}</HeadCell>
         </Row>
       </TableHead>
       <TableBody>
@@ -59,26 +108,29 @@ function CandidateTable({
               <Link href={`/${collaboration}/candidates/${one.id}`}>
                 {one.star} {one.name}
               </Link>
+              <FoldedValues candidate={one} lead={lead} />
             </Cell>
-            <Cell className="whitespace-nowrap">{one.survey.name}</Cell>
-            <Cell className="whitespace-nowrap">
+            <Cell className={`whitespace-nowrap ${fromBroad}`}>{one.survey.name}</Cell>
+            <Cell className="md:whitespace-nowrap">
               <StateMark kind={statusMarks[one.status]}>
                 {statusWords[one.status]}
                 {one.proposals > 0 &&
                   `, ${one.proposals === 1 ? '1 proposal' : `${one.proposals} proposals`}`}
               </StateMark>
             </Cell>
-            <Cell isNumeric>{one.observations === 0 ? '–' : one.observations}</Cell>
-            <Cell isNumeric>
-              {one.massMjup === null ? '–' : withErrors(one.massMjup, one.massErrorsMjup, '')}
+            <Cell isNumeric className={fromWide}>
+              {one.observations === 0 ? '–' : one.observations}
             </Cell>
-            <Cell isNumeric>
-              {one.semiMajorAxisAu === null
-                ? '–'
-                : withErrors(one.semiMajorAxisAu, one.semiMajorAxisErrorsAu, '')}
+            <Cell isNumeric className={fromMiddle}>
+              {massOf(one)}
             </Cell>
-            <Cell isNumeric>{one.probability === null ? '–' : formatPlain(one.probability)}</Cell>
-            <Cell>{rangesOf(one)}</Cell>
+            <Cell isNumeric className={fromMiddle}>
+              {axisOf(one)}
+            </Cell>
+            <Cell isNumeric className={fromWide}>
+              {one.probability === null ? '–' : formatPlain(one.probability)}
+            </Cell>
+            <Cell className={fromWide}>{rangesOf(one)}</Cell>
           </Row>
         ))}
       </TableBody>

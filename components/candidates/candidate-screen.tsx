@@ -7,6 +7,7 @@ import { removeObservation, useCandidate } from '@/components/hooks/use-candidat
 import { Button } from '@/components/ui/button';
 import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
 import { Link } from '@/components/ui/link';
+import { JupiterMass } from '@/components/ui/notation';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
@@ -17,33 +18,41 @@ import { EpochDialog } from './epoch-dialog';
 import { EpochTable } from './epoch-table';
 import { Estimates } from './estimates';
 import { MotionSection } from './motion-section';
-import { statusMarks, statusWords } from './status-words';
+import { originWords, statusMarks, statusWords } from './status-words';
 import { trackFigures } from './track-figure';
 import { VerdictForm } from './verdict-form';
-import { VerdictHistory, withErrors } from './verdict-history';
+import { standingVerdict, VerdictHistory, withErrors } from './verdict-history';
 
 function rangesFact({ isInsideRanges }: CandidateDetail): string {
   if (isInsideRanges === null) return 'not known';
   return isInsideRanges ? 'inside' : 'outside';
 }
 
+/** "mass, as the file states it". */
+const withOrigin = (name: string, value: number | null, from: string | null | undefined) =>
+  value === null || !from ? name : `${name}, ${originWords(from)}`;
+
 function factsOf(candidate: CandidateDetail): Fact[] {
   const { massMjup, massErrorsMjup, semiMajorAxisAu, semiMajorAxisErrorsAu } = candidate;
+  const verdict = standingVerdict(candidate.history);
   return [
     {
       name: 'mass',
+      label: withOrigin('mass', massMjup, verdict?.massFrom),
       value:
         massMjup === null ? (
           '–'
         ) : (
           <>
             {withErrors(massMjup, massErrorsMjup, '')}
-            {THIN_SPACE}M<sub>J</sub>
+            {THIN_SPACE}
+            <JupiterMass />
           </>
         ),
     },
     {
       name: 'semi-major axis',
+      label: withOrigin('semi-major axis', semiMajorAxisAu, verdict?.semiMajorAxisFrom),
       help: 'companion',
       value:
         semiMajorAxisAu === null ? '–' : withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, 'AU'),
@@ -157,7 +166,11 @@ export function CandidateScreen({
         </div>
         <div className="flex min-w-0 flex-col gap-9">
           <section>
-            <SectionOpener number={3} title="Mass and axis" context="if it is bound" />
+            <SectionOpener
+              number={3}
+              title="Mass and axis"
+              context="estimated here, if it is bound"
+            />
             <Estimates candidate={candidate} />
             <HostValues collaboration={collaboration} candidate={candidate} />
           </section>

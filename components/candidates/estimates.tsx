@@ -1,18 +1,36 @@
-import { formatAsymmetric, formatPlain, formatSignificant } from '@/lib/quantities/display';
+import type { ReactNode } from 'react';
+import { JupiterMass } from '@/components/ui/notation';
+import {
+  formatAsymmetric,
+  formatPlain,
+  formatSignificant,
+  THIN_SPACE,
+} from '@/lib/quantities/display';
 import type { AxisEstimate, CandidateDetail, MassEstimate } from '@/lib/schemas/candidates';
 import { LEAST_MAGNITUDE_ERROR } from '@/lib/sensitivity/vetting';
 
-const intervalWords = (
-  { median, lower, upper }: { median: number; lower: number; upper: number },
-  unit: string,
-) => formatAsymmetric(median, median - lower, upper - median, unit);
+function Interval({
+  of: { median, lower, upper },
+  unit,
+}: {
+  of: { median: number; lower: number; upper: number };
+  unit: ReactNode;
+}) {
+  return (
+    <>
+      {formatAsymmetric(median, median - lower, upper - median)}
+      {THIN_SPACE}
+      {unit}
+    </>
+  );
+}
 
-function Fact({ name, value, children }: { name: string; value: string; children: string }) {
+function Fact({ name, value, children }: { name: string; value: ReactNode; children: string }) {
   return (
     <div>
       <dt className="text-ink3 text-note">{name}</dt>
       <dd>
-        <span className="font-semibold text-figure">{value}</span>
+        <span className="font-semibold text-value">{value}</span>
         <span className="block max-w-[56ch] text-ink2 text-note">{children}</span>
       </dd>
     </div>
@@ -49,14 +67,14 @@ export function Estimates({ candidate }: { candidate: CandidateDetail }) {
   return (
     <dl className="grid gap-4">
       <Fact
-        name="mass from photometry"
-        value={mass?.interval ? intervalWords(mass.interval, 'Jupiter masses') : 'none'}
+        name="mass, from its contrast, age and cooling"
+        value={mass?.interval ? <Interval of={mass.interval} unit={<JupiterMass />} /> : 'none'}
       >
         {mass ? massSentence(mass) : `${candidate.massMissing}.`}
       </Fact>
       <Fact
-        name="semi-major axis from the projected separation"
-        value={axis ? intervalWords(axis, 'AU') : 'none'}
+        name="semi-major axis, from its projected separation"
+        value={axis ? <Interval of={axis} unit="AU" /> : 'none'}
       >
         {axis ? axisSentence(axis) : `${candidate.axisMissing}.`}
       </Fact>

@@ -13,6 +13,10 @@ export function withErrors(value: number, errors: [number, number] | null, unit:
     : formatAsymmetric(value, errors[0], errors[1], unit);
 }
 
+/** The verdict that the values of the candidate come from: the newest that is no proposal. */
+export const standingVerdict = (history: VerdictView[]) =>
+  [...history].reverse().find(({ isProposal }) => !isProposal);
+
 /** Mass and axis of a verdict, each with how it came about. */
 export function placeWords(verdict: VerdictView): string {
   const { massMjup, massErrorsMjup, semiMajorAxisAu, semiMajorAxisErrorsAu } = verdict;

@@ -3,7 +3,11 @@ import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
 import { axisSentence, massSentence } from '@/components/candidates/estimates';
 import { readVerdict, VerdictForm } from '@/components/candidates/verdict-form';
-import { placeWords, VerdictHistory } from '@/components/candidates/verdict-history';
+import {
+  placeWords,
+  standingVerdict,
+  VerdictHistory,
+} from '@/components/candidates/verdict-history';
 import { TimeZoneProvider } from '@/components/ui/time-zone';
 import { giveVerdictSchema, type MassEstimate, type VerdictView } from '@/lib/schemas/candidates';
 import { buildCandidate } from './build-candidate';
@@ -98,6 +102,13 @@ describe('the history', () => {
       );
     expect(dayIn('America/Lima')).toContain('R. Castellan, 5 Mar 2026');
     expect(dayIn('Asia/Tokyo')).toContain('R. Castellan, 6 Mar 2026');
+  });
+
+  it('takes the values of the candidate from the newest verdict that is no proposal', () => {
+    const older = { ...verdict, number: 1, massFrom: 'file' };
+    const proposal = { ...verdict, number: 3, isProposal: true };
+    expect(standingVerdict([older, verdict, proposal])).toBe(verdict);
+    expect(standingVerdict([proposal])).toBeUndefined();
   });
 
   it('says how mass and axis came about', () => {
