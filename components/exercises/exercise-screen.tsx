@@ -20,7 +20,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { StateMark } from '@/components/ui/state-mark';
 import { TextField } from '@/components/ui/text-field';
 import type { ExerciseDetail } from '@/lib/schemas/exercises';
-import { dueWords, openWords } from './exercise-words';
+import { dueWords, handedInWords, openWords } from './exercise-words';
 import { OwnWork } from './own-work';
 import { StatedLimit } from './stated-limit';
 import { SubmissionTable } from './submission-table';
@@ -92,9 +92,9 @@ export function ExerciseScreen({ collaboration, initial }: ExerciseScreenProps) 
           <SectionOpener
             title="Handed in"
             context={
-              isEverybody
-                ? `${exercise.counts?.submissions} by ${exercise.counts?.started} who began it`
-                : 'by you'
+              exercise.counts === null
+                ? 'by you'
+                : handedInWords(exercise.participants, exercise.counts.started)
             }
             tools={
               isEverybody && (

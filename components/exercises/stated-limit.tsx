@@ -5,7 +5,7 @@ import type { StatedLimit as Stated } from '@/lib/schemas/exercises';
 export function StatedLimit({ stated }: { stated: Stated }) {
   return (
     <div className="min-w-0">
-      <p className="max-w-[52ch]">{stated.sentence}</p>
+      <p className="max-w-[72ch] text-pretty">{stated.sentence}</p>
       <details className="text-chart text-ink3">
         <summary className="w-max py-1 text-act max-md:py-3">conditions</summary>
         <ul className="max-w-[60ch]">

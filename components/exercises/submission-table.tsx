@@ -18,6 +18,10 @@ interface SubmissionTableProps {
   onChanged(): void;
 }
 
+/** Columns that narrower screens fold under the person and under the limit. */
+const fromMiddle = 'max-md:hidden';
+const fromWide = 'max-xl:hidden';
+
 const stateWords = { 'not-begun': 'not begun', begun: 'begun', 'handed-in': 'handed in' } as const;
 
 /** A row a submission, and one for whoever has not handed in: who, what changed, what came out. */
@@ -31,12 +35,12 @@ export function SubmissionTable(props: SubmissionTableProps) {
         <TableHead>
           <tr>
             {isEverybody && <HeadCell>person</HeadCell>}
-            {isEverybody && <HeadCell>state</HeadCell>}
-            <HeadCell>run</HeadCell>
-            <HeadCell>what changed</HeadCell>
-            <HeadCell>limit with its conditions</HeadCell>
-            <HeadCell>against the reference</HeadCell>
-            <HeadCell>remark and answer</HeadCell>
+            {isEverybody && <HeadCell className={fromWide}>state</HeadCell>}
+            <HeadCell className={isEverybody ? fromWide : ''}>run</HeadCell>
+            <HeadCell className={fromWide}>what changed</HeadCell>
+            <HeadCell className="max-md:whitespace-normal">limit with its conditions</HeadCell>
+            <HeadCell className={fromWide}>against the reference</HeadCell>
+            <HeadCell className={fromMiddle}>remark and answer</HeadCell>
           </tr>
         </TableHead>
         <TableBody>
@@ -44,61 +48,58 @@ export function SubmissionTable(props: SubmissionTableProps) {
             participant.submissions.length === 0 ? (
               <WaitingRow key={participant.person.id} participant={participant} columns={columns} />
             ) : (
-              participant.submissions.map((submission, at) => (
-                <Row key={submission.id} className="[&>td]:align-top [&>th]:align-top">
-                  {isEverybody && (
-                    <Cell isRowHead className="whitespace-nowrap">
-                      {at === 0 ? (
-                        participant.person.name
-                      ) : (
-                        <span className="sr-only">{participant.person.name}</span>
-                      )}
-                    </Cell>
-                  )}
-                  {isEverybody && (
-                    <Cell className="whitespace-nowrap">
-                      <StateMark kind={at === 0 ? 'ok' : 'draft'}>
-                        {at === 0 ? stateWords[participant.state] : 'earlier'}
-                      </StateMark>
-                      {participant.startedAt !== null && (
-                        <span className="block text-chart text-ink3">
-                          after {spanWords(participant.startedAt, submission.submittedAt)}
-                        </span>
-                      )}
-                    </Cell>
-                  )}
-                  <Cell className="whitespace-nowrap">
-                    <Link
-                      className="underline underline-offset-3"
-                      href={`/${collaboration}/analyses/${submission.run.analysis}`}
-                    >
-                      {submission.run.analysis}
-                    </Link>
-                    , run {submission.run.number}
-                  </Cell>
-                  <Cell className="min-w-44">
-                    {submission.differences.length === 0
-                      ? 'nothing'
-                      : submission.differences.join('; ')}
-                  </Cell>
-                  <Cell className="min-w-64">
-                    <StatedLimit stated={submission.stated} />
-                  </Cell>
-                  <Cell className="whitespace-nowrap">{submission.difference}</Cell>
-                  <Cell className="min-w-56">
-                    <Words submission={submission} />
+              participant.submissions.map((submission, at) => {
+                const state = (
+                  <SubmissionState participant={participant} submission={submission} at={at} />
+                );
+                const run = <RunLink collaboration={collaboration} submission={submission} />;
+                const words = (
+                  <Words
+                    submission={submission}
+                    onAnswer={
+                      isEverybody
+                        ? () => setAnswered({ who: participant.person.name, submission })
+                        : undefined
+                    }
+                  />
+                );
+                return (
+                  <Row key={submission.id} className="[&>td]:align-top [&>th]:align-top">
                     {isEverybody && (
-                      <Button
-                        size="small"
-                        className="mt-1"
-                        onClick={() => setAnswered({ who: participant.person.name, submission })}
-                      >
-                        {submission.comment === null ? 'Answer' : 'Change the answer'}
-                      </Button>
+                      <Cell isRowHead className="md:whitespace-nowrap">
+                        {at === 0 ? (
+                          participant.person.name
+                        ) : (
+                          <span className="sr-only">{participant.person.name}</span>
+                        )}
+                        <span className="block font-normal xl:hidden">
+                          {state}
+                          <span className="block whitespace-nowrap">{run}</span>
+                        </span>
+                      </Cell>
                     )}
-                  </Cell>
-                </Row>
-              ))
+                    {isEverybody && (
+                      <Cell className={`whitespace-nowrap ${fromWide}`}>{state}</Cell>
+                    )}
+                    <Cell className={`whitespace-nowrap ${isEverybody ? fromWide : ''}`}>
+                      {run}
+                    </Cell>
+                    <Cell className={`min-w-44 ${fromWide}`}>{changedWords(submission)}</Cell>
+                    <Cell className="md:min-w-64">
+                      <StatedLimit stated={submission.stated} />
+                      <dl className="xl:hidden">
+                        <FoldedFact name="against the reference">
+                          {submission.difference}
+                        </FoldedFact>
+                        <FoldedFact name="what changed">{changedWords(submission)}</FoldedFact>
+                      </dl>
+                      <div className="mt-1 md:hidden">{words}</div>
+                    </Cell>
+                    <Cell className={`whitespace-nowrap ${fromWide}`}>{submission.difference}</Cell>
+                    <Cell className={`min-w-56 ${fromMiddle}`}>{words}</Cell>
+                  </Row>
+                );
+              })
             ),
           )}
         </TableBody>
@@ -121,16 +122,18 @@ export function SubmissionTable(props: SubmissionTableProps) {
 }
 
 function WaitingRow({ participant, columns }: { participant: ParticipantView; columns: number }) {
+  const state = (
+    <StateMark kind={participant.state === 'begun' ? 'running' : 'waiting'}>
+      {stateWords[participant.state]}
+    </StateMark>
+  );
   return (
     <Row>
-      <Cell isRowHead className="whitespace-nowrap">
+      <Cell isRowHead className="md:whitespace-nowrap">
         {participant.person.name}
+        <span className="block font-normal xl:hidden">{state}</span>
       </Cell>
-      <Cell className="whitespace-nowrap">
-        <StateMark kind={participant.state === 'begun' ? 'running' : 'waiting'}>
-          {stateWords[participant.state]}
-        </StateMark>
-      </Cell>
+      <Cell className={`whitespace-nowrap ${fromWide}`}>{state}</Cell>
       <Cell colSpan={columns - 2} className="text-ink3">
         {participant.analysis === null ? '' : `draft ${participant.analysis}`}
       </Cell>
@@ -138,7 +141,69 @@ function WaitingRow({ participant, columns }: { participant: ParticipantView; co
   );
 }
 
-function Words({ submission: { remark, comment, commentedBy } }: { submission: SubmissionView }) {
+const changedWords = ({ differences }: SubmissionView) =>
+  differences.length === 0 ? 'nothing' : differences.join('; ');
+
+/** Whether it is the newest of the person, and how long it took. */
+function SubmissionState({
+  participant,
+  submission,
+  at,
+}: {
+  participant: ParticipantView;
+  submission: SubmissionView;
+  at: number;
+}) {
+  return (
+    <>
+      <StateMark kind={at === 0 ? 'ok' : 'draft'}>
+        {at === 0 ? stateWords[participant.state] : 'earlier'}
+      </StateMark>
+      {participant.startedAt !== null && (
+        <span className="block text-chart text-ink3">
+          after {spanWords(participant.startedAt, submission.submittedAt)}
+        </span>
+      )}
+    </>
+  );
+}
+
+function RunLink({
+  collaboration,
+  submission: { run },
+}: {
+  collaboration: string;
+  submission: SubmissionView;
+}) {
+  return (
+    <>
+      <Link
+        className="underline underline-offset-3"
+        href={`/${collaboration}/analyses/${run.analysis}`}
+      >
+        {run.analysis}
+      </Link>
+      , run {run.number}
+    </>
+  );
+}
+
+function FoldedFact({ name, children }: { name: string; children: string }) {
+  return (
+    <div>
+      <dt className="inline text-ink3">{name}: </dt>
+      <dd className="inline">{children}</dd>
+    </div>
+  );
+}
+
+interface WordsProps {
+  submission: SubmissionView;
+  /** Given to whoever may answer. */
+  onAnswer?(): void;
+}
+
+function Words({ submission: { remark, comment, commentedBy }, onAnswer }: WordsProps) {
   return (
     <>
       <p className="max-w-[48ch] whitespace-pre-line">{remark === '' ? 'no remark' : remark}</p>
@@ -147,6 +212,11 @@ function Words({ submission: { remark, comment, commentedBy } }: { submission: S
           <span className="text-ink3">{commentedBy ?? 'somebody who left'}: </span>
           {comment}
         </p>
+      )}
+      {onAnswer && (
+        <Button size="small" className="mt-1" onClick={onAnswer}>
+          {comment === null ? 'Answer' : 'Change the answer'}
+        </Button>
       )}
     </>
   );

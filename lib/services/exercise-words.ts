@@ -1,6 +1,6 @@
 import { describeLevel, describePopulation, describePrior } from '@/lib/inference';
 import type { Population } from '@/lib/population';
-import { formatRate, formatSignificant, type RateQuantity } from '@/lib/quantities/display';
+import { formatRate, type RateQuantity } from '@/lib/quantities/display';
 import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import type { ChangeablePart, StatedLimit } from '@/lib/schemas/exercises';
 import { canonicalJson } from '@/models/digest';
@@ -82,7 +82,16 @@ export function recipeDifferences(from: WordedRecipe, to: WordedRecipe): RecipeD
   return differences;
 }
 
-/** How far a limit lies from the reference, or why the two are not compared. */
+/** A limit as screens show it, at two digits [%, or planets per 100 stars], and its decimals. */
+function shownLimit({ limit }: StatedLimit) {
+  const value = Number((100 * limit).toPrecision(2));
+  return { value, decimals: Math.max(0, 1 - Math.floor(Math.log10(value) + 1e-12)) };
+}
+
+/**
+ * How far a limit lies from the reference, or why the two are not compared. The difference is that
+ * of the shown numbers, so that whoever subtracts them finds it.
+ */
 export function limitDifferenceWords(reference: StatedLimit, other: StatedLimit): string {
   if (!reference.isConstrained || !other.isConstrained) return 'one of the two has no limit';
   if (reference.quantity !== other.quantity) return 'another quantity: not compared';
@@ -91,7 +100,8 @@ export function limitDifferenceWords(reference: StatedLimit, other: StatedLimit)
   if (formatRate(other.limit, quantity) === formatRate(reference.limit, quantity)) {
     return 'no change at 2 digits';
   }
-  const sign = other.limit > reference.limit ? '+' : '−';
-  const size = formatSignificant(100 * Math.abs(other.limit - reference.limit), 2);
+  const [from, to] = [shownLimit(reference), shownLimit(other)];
+  const sign = to.value > from.value ? '+' : '−';
+  const size = Math.abs(to.value - from.value).toFixed(Math.max(from.decimals, to.decimals));
   return `${sign}${size} ${quantity === 'host_fraction' ? 'points' : 'per 100 stars'}`;
 }
