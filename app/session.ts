@@ -4,12 +4,20 @@ import { cache } from 'react';
 import { type Actor, actorIn, type KnownPerson } from '@/lib/access/actor';
 import { findPersonOfSession, readSessionCookie, sessionCookieName } from '@/lib/access/sessions';
 import { NotFound } from '@/lib/errors';
+import type { Me } from '@/lib/schemas/people';
+import { getMe } from '@/lib/services/people';
 
 /** Whoever is signed in, or null; looked up once a page. */
 export const currentPerson = cache(async (): Promise<KnownPerson | null> => {
   const claims = await readSessionCookie((await cookies()).get(sessionCookieName())?.value);
   return claims && findPersonOfSession(claims);
 });
+
+/** Where whoever is signed in works; null for a visitor. */
+export async function currentCollaborations(): Promise<Me['collaborations'] | null> {
+  const person = await currentPerson();
+  return person && (await getMe(person)).collaborations;
+}
 
 /** The address of the page, as proxy.ts notes it. */
 async function currentAddress(otherwise: string): Promise<string> {

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
+import { currentCollaborations } from '@/app/session';
 import { HelpFrame } from '@/components/help/help-frame';
 
-export default function HelpLayout({ children }: { children: ReactNode }) {
-  return <HelpFrame>{children}</HelpFrame>;
+export default async function HelpLayout({ children }: { children: ReactNode }) {
+  return <HelpFrame collaborations={await currentCollaborations()}>{children}</HelpFrame>;
 }
