@@ -1,10 +1,11 @@
 'use client';
 
-import { useState } from 'react';
+import { type ReactNode, useState } from 'react';
 import type { z } from 'zod';
 import { useAction } from '@/components/hooks/use-action';
 import { giveVerdict } from '@/components/hooks/use-candidates';
 import { Button } from '@/components/ui/button';
+import { JupiterMass } from '@/components/ui/notation';
 import { Notice } from '@/components/ui/notice';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
@@ -50,7 +51,7 @@ export function readVerdict(form: FormData, isProposal: boolean): VerdictInput {
 interface ValueChoiceProps {
   name: string;
   title: string;
-  unit: string;
+  unit: ReactNode;
   kept: string;
   measured: { value: string; label: string; isThere: boolean };
 }
@@ -133,7 +134,7 @@ export function VerdictForm({ collaboration, candidate, onGiven }: VerdictFormPr
       <ValueChoice
         name="mass"
         title="Mass"
-        unit="MJ"
+        unit={<JupiterMass />}
         kept={candidate.massMjup === null ? 'none' : 'as it is'}
         measured={{
           value: 'photometry',

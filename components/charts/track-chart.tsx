@@ -1,8 +1,8 @@
 'use client';
 
 import { useState } from 'react';
-import { formatPlain } from '@/lib/quantities/display';
-import { BottomAxis, LeftAxis } from './axes';
+import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
+import { BottomAxis, JupiterMassText, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { PointReadout } from './chart-readout';
 import type { DataTable } from './data-table';
@@ -30,7 +30,7 @@ export interface TrackChartProps {
 
 const margin = { left: 46, right: 62, top: 26, bottom: 46 };
 
-/** One line a mass against age, named at its end. */
+/** One line a mass against age, named where the lines are apart. */
 export function TrackChart(props: TrackChartProps) {
   const { subject, ageMyr, tracks, isDifference = false, height = 340 } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
@@ -108,9 +108,15 @@ export function TrackChart(props: TrackChartProps) {
           r="4"
         />
       )}
-      {names.map((name) => (
-        <text key={name.text} className="page-halo" x={name.x + 5} y={name.y + 4}>
-          {name.text}
+      {names.map((name, index) => (
+        <text key={name.massMjup} className="page-halo" {...besideOrOn(name, left)} y={name.y + 4}>
+          {formatPlain(name.massMjup)}
+          {index === 0 && (
+            <>
+              {THIN_SPACE}
+              <JupiterMassText />
+            </>
+          )}
         </text>
       ))}
       <BottomAxis
@@ -125,30 +131,70 @@ export function TrackChart(props: TrackChartProps) {
   );
 }
 
-/** Names at the ends of the lines; one that would lie on another is left out. */
-function placeNames(
+interface TrackName {
+  massMjup: number;
+  x: number;
+  y: number;
+  /** At the end of its line it stands beside it, else on it. */
+  isOnLine: boolean;
+}
+
+const NAME_APART = 14;
+
+/**
+ * Names at the ends of the lines; where most of those would lie on each other, at the age where the
+ * most names have room. One that would still lie on another is left out.
+ */
+export function placeNames(
   tracks: Track[],
   ageMyr: Float64Array,
   x: (age: number) => number,
   y: (value: number) => number,
-) {
-  const placed: { text: string; x: number; y: number }[] = [];
-  const unit = ' MJ';
-  for (const { massMjup, values } of [...tracks].reverse()) {
-    let end = values.length - 1;
-    while (end >= 0 && !Number.isFinite(values[end])) end--;
-    if (end < 0) continue;
-    const name = {
-      text: `${formatPlain(massMjup)}${placed.length === 0 ? unit : ''}`,
-      x: x(ageMyr[end]),
-      y: y(values[end]),
-    };
-    if (placed.every((other) => Math.hypot(other.x - name.x, other.y - name.y) > 14)) {
+): TrackName[] {
+  const at = ({ massMjup, values }: Track, index: number, isOnLine: boolean) => ({
+    ...{ massMjup, isOnLine },
+    x: x(ageMyr[index]),
+    y: y(values[index]),
+  });
+  const ends = apart(
+    tracks.flatMap((track) => {
+      let end = track.values.length - 1;
+      while (end >= 0 && !Number.isFinite(track.values[end])) end--;
+      return end < 0 ? [] : [at(track, end, false)];
+    }),
+  );
+  if (2 * ends.length >= tracks.length) return ends;
+  const columns = [...ageMyr.keys()].map((index) =>
+    apart(
+      tracks
+        .filter(({ values }) => Number.isFinite(values[index]))
+        .map((track) => at(track, index, true)),
+    ),
+  );
+  return columns.reduce((best, names) => (hasMoreRoom(names, best) ? names : best), ends);
+}
+
+/** A name on its line would reach over the axis at the first age: there it stands beside. */
+const besideOrOn = ({ x, isOnLine }: TrackName, left: number) =>
+  isOnLine && x > left + 24
+    ? ({ x, textAnchor: 'middle' } as const)
+    : ({ x: x + 5, textAnchor: 'start' } as const);
+
+/** From the top down, those that do not lie on one before. */
+function apart(names: TrackName[]): TrackName[] {
+  const placed: TrackName[] = [];
+  for (const name of [...names].sort((a, b) => a.y - b.y)) {
+    if (placed.every((other) => Math.hypot(other.x - name.x, other.y - name.y) > NAME_APART)) {
       placed.push(name);
     }
   }
   return placed;
 }
+
+const heightOf = (names: TrackName[]) => (names.at(-1)?.y ?? 0) - (names[0]?.y ?? 0);
+
+const hasMoreRoom = (names: TrackName[], than: TrackName[]) =>
+  names.length > than.length || (names.length === than.length && heightOf(names) > heightOf(than));
 
 function trackSentence({ subject, ageMyr, tracks }: TrackChartProps, ends: [number, number]) {
   const ages = `${formatPlain(ageMyr[0])} to ${formatPlain(ageMyr[ageMyr.length - 1])} Myr`;

@@ -1,3 +1,4 @@
+import { JupiterMass } from '@/components/ui/notation';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
 import { formatPlain } from '@/lib/quantities/display';
@@ -39,7 +40,7 @@ export function CoolingList({ tables, shownId, builtInId, onShow }: CoolingListP
     })),
     {
       id: builtInId,
-      name: `${BUILT_IN_LAW_NAME} (built in, approximate)`,
+      name: `${BUILT_IN_LAW_NAME} (built in)`,
       bands: BUILT_IN_LAW_BANDS,
       masses: [massMinMjup, massMaxMjup],
       ages: [ageMinMyr, ageMaxMyr],
@@ -52,7 +53,9 @@ export function CoolingList({ tables, shownId, builtInId, onShow }: CoolingListP
         <tr>
           <HeadCell>relation</HeadCell>
           <HeadCell>bands</HeadCell>
-          <HeadCell isNumeric>masses, MJ</HeadCell>
+          <HeadCell isNumeric>
+            masses, <JupiterMass />
+          </HeadCell>
           <HeadCell isNumeric>ages, Myr</HeadCell>
           <HeadCell>start</HeadCell>
         </tr>

@@ -1,9 +1,15 @@
 'use client';
 
+import { JupiterMass } from '@/components/ui/notation';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { populationConditions } from '@/lib/inference/population-words';
 import type { SystemsPopulation } from '@/lib/population';
-import { formatPercent, formatRange, formatSignificant } from '@/lib/quantities/display';
+import {
+  formatPercent,
+  formatRange,
+  formatSignificant,
+  THIN_SPACE,
+} from '@/lib/quantities/display';
 import { BuilderPart } from './builder-part';
 import type { PreviewSetting } from './builder-setting';
 import { FractionPart } from './fraction-part';
@@ -61,8 +67,10 @@ export function SystemsParts({ population, range, orbits, setting, onSetting }: 
         </Table>
         <p className="mt-2 text-ink2 text-note">
           {facts.companions} companions, {formatSignificant(facts.meanCompanions, 2)} a system by
-          weight, of {formatRange(range.massMinMjup, range.massMaxMjup, 'MJ')} at{' '}
-          {formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}.
+          weight, of {formatRange(range.massMinMjup, range.massMaxMjup, '')}
+          {THIN_SPACE}
+          <JupiterMass /> at {formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}
+          .
         </p>
       </BuilderPart>
       <BuilderPart number={2} title="Weights">

@@ -1,8 +1,8 @@
-import type { ComponentProps } from 'react';
+import type { ComponentProps, ReactNode } from 'react';
 import { TextField } from './text-field';
 
 interface NumberFieldProps extends Omit<ComponentProps<typeof TextField>, 'type' | 'trailing'> {
-  unit?: string;
+  unit?: ReactNode;
 }
 
 /** A number with its unit inside the field; any number of decimals. */

@@ -1,10 +1,10 @@
 'use client';
 
-import { ProportionalTo } from '@/components/ui/notation';
+import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
 import { toLogIndex } from '@/lib/population';
-import { formatPlain } from '@/lib/quantities/display';
+import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import { sweepParameterSchema, sweepSettingsSchema } from '@/lib/schemas/study-settings';
 import type { FormProps } from '../kind-entry';
 import { SettingsFrame } from '../settings-frame';
@@ -62,6 +62,7 @@ export function SweepForm(props: FormProps<'sweep'>) {
   });
   const over = form.draft.over as SweepParameter;
   const { unit } = sweepParameters[over];
+  const unitSign = unit === 'index' ? undefined : unit === 'MJ' ? <JupiterMass /> : unit;
   const own = ownValue(over, asked);
   return (
     <SettingsFrame
@@ -82,9 +83,20 @@ export function SweepForm(props: FormProps<'sweep'>) {
               <sup>β</sup>.{' '}
             </>
           )}
-          {own === undefined
-            ? 'Everything else stays as in the run.'
-            : `The run used ${formatPlain(quotedValue(over, own))}${unit === 'index' ? '' : ` ${unit}`}; everything else stays as in the run.`}
+          {own === undefined ? (
+            'Everything else stays as in the run.'
+          ) : (
+            <>
+              The run used {formatPlain(quotedValue(over, own))}
+              {unitSign !== undefined && (
+                <>
+                  {THIN_SPACE}
+                  {unitSign}
+                </>
+              )}
+              ; everything else stays as in the run.
+            </>
+          )}
         </>
       }
     >
@@ -104,7 +116,7 @@ export function SweepForm(props: FormProps<'sweep'>) {
           <NumberField
             {...form.field(name)}
             label={name === 'from' ? 'From' : 'To'}
-            unit={unit === 'index' ? undefined : unit}
+            unit={unitSign}
           />
         </div>
       ))}
