@@ -8,7 +8,7 @@ import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { mapMargin } from './completeness-map-chart';
 import { tableOfColumns } from './data-table';
-import type { MapData } from './map-contours';
+import type { Box, MapData } from './map-contours';
 import { linePath } from './paths';
 import { CursorMarks } from './reading-marks';
 import { scaleLog } from './scales';
@@ -90,7 +90,7 @@ export function MassLimitChart({ map, subject, height = 230 }: MassLimitChartPro
         <path key={share} className={classOf[share]} d={linePath(au, limits[index], x, y)} />
       ))}
       {shares.map((share, index) => {
-        const place = namePlace(limits[index], au, { x, y }, frame.right, share === 0.5);
+        const place = namePlace(limits[index], au, { x, y }, frame, share === 0.5);
         return (
           place && (
             <text
@@ -137,17 +137,27 @@ function lowest(limits: Float64Array): number | undefined {
   return best;
 }
 
-/** The lower line is named under its best place, the upper one beside its beginning, where nothing else is. */
+/** Half the width of a name [px]. */
+const NAME_HALF = 62;
+
+/** The lower line is named under its best place, above it where the axis is near; the upper one beside its beginning, where nothing else is. */
 function namePlace(
   limits: Float64Array,
   au: Float64Array,
   { x, y }: { x(au: number): number; y(mass: number): number },
-  right: number,
+  { left, right, bottom }: Box,
   isLower: boolean,
 ) {
   const best = lowest(limits);
   if (best === undefined) return undefined;
-  if (isLower) return { x: x(au[best]), y: y(limits[best]) + 18, anchor: 'middle' } as const;
+  if (isLower) {
+    const lowestY = y(limits[best]);
+    return {
+      x: Math.min(right - NAME_HALF, Math.max(left + NAME_HALF, x(au[best]))),
+      y: lowestY + 22 < bottom ? lowestY + 18 : lowestY - 8,
+      anchor: 'middle',
+    } as const;
+  }
   const start = limits.findIndex(Number.isFinite);
   const at = { x: x(au[start]), y: y(limits[start]) };
   return at.x + 150 < right
