@@ -16,7 +16,7 @@ export function CheckboxField({ label, hint, ...input }: CheckboxFieldProps) {
         {...input}
         id={id}
         type="checkbox"
-        className="mt-0.5 size-[18px] shrink-0 accent-(--ink)"
+        className="checkbox mt-0.5"
         aria-describedby={hint ? `${id}-note` : undefined}
       />
       <div>

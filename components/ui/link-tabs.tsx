@@ -9,13 +9,13 @@ interface LinkTabsProps {
 /** Tabs that are pages of their own: links in a navigation, so the address says which one is read. */
 export function LinkTabs({ label, tabs }: LinkTabsProps) {
   return (
-    <nav aria-label={label} className="mb-3.5 flex gap-[26px] overflow-x-auto border-rule border-b">
+    <nav aria-label={label} className="mb-3.5 flex flex-wrap gap-x-[26px] border-rule border-b">
       {tabs.map((tab) => (
         <Link
           key={tab.href}
           href={tab.href}
           aria-current={tab.isCurrent ? 'page' : undefined}
-          className={`flex min-h-9 items-center whitespace-nowrap border-b-[3px] pt-2 pb-1.5 hover:no-underline focus-visible:-outline-offset-2 max-md:min-h-11 ${tab.isCurrent ? 'border-ink font-semibold text-ink' : 'border-transparent text-ink2 hover:text-ink'}`}
+          className={`flex min-h-9 items-center whitespace-nowrap border-b-[3px] pt-2 pb-1.5 hover:no-underline max-md:min-h-11 ${tab.isCurrent ? 'border-ink font-semibold text-ink' : 'border-transparent text-ink2 hover:text-ink'}`}
         >
           {tab.label}
           {tab.count !== undefined && (

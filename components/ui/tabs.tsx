@@ -33,13 +33,13 @@ export function Tabs({ label, tabs, selected, onSelect }: TabsProps) {
     >
       <Primitive.List
         aria-label={label}
-        className="mb-3.5 flex gap-[26px] overflow-x-auto border-rule border-b"
+        className="mb-3.5 flex flex-wrap gap-x-[26px] border-rule border-b"
       >
         {tabs.map((tab) => (
           <Primitive.Trigger
             key={tab.id}
             value={tab.id}
-            className="min-h-9 whitespace-nowrap border-transparent border-b-[3px] pt-2 pb-1.5 text-ink2 focus-visible:-outline-offset-2 data-[state=active]:border-ink data-[state=active]:font-semibold data-[state=active]:text-ink max-md:min-h-11"
+            className="min-h-9 whitespace-nowrap border-transparent border-b-[3px] pt-2 pb-1.5 text-ink2 data-[state=active]:border-ink data-[state=active]:font-semibold data-[state=active]:text-ink max-md:min-h-11"
           >
             {tab.label}
             {tab.count !== undefined && (

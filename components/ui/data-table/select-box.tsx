@@ -3,7 +3,6 @@
 import { useEffect, useRef } from 'react';
 import { Cell, HeadCell } from '../table';
 
-const boxLook = 'size-[18px] accent-(--ink)';
 const frameLook = 'flex size-6 items-center justify-center max-md:size-11';
 
 interface SelectBoxProps {
@@ -20,7 +19,7 @@ export function SelectBox({ label, isChecked, isDisabled, onToggle }: SelectBoxP
       <label className={frameLook}>
         <input
           type="checkbox"
-          className={boxLook}
+          className="checkbox"
           checked={isChecked}
           disabled={isDisabled}
           onChange={({ nativeEvent }) => onToggle((nativeEvent as MouseEvent).shiftKey === true)}
@@ -50,7 +49,7 @@ export function SelectHead({ isAllSelected, isSomeSelected, toggleAll, many }: S
         <input
           ref={box}
           type="checkbox"
-          className={boxLook}
+          className="checkbox"
           checked={isAllSelected}
           onChange={() => toggleAll(!isAllSelected)}
         />
