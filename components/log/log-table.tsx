@@ -28,6 +28,9 @@ function Changes({ entry }: { entry: AuditEntryView }) {
   );
 }
 
+/** "create-survey" → "create survey". */
+const actionWords = ({ action }: AuditEntryView) => action.replaceAll('-', ' ');
+
 const addressWords = (address: string | null) =>
   address === null ? '–' : address === 'direct' ? 'not known' : address;
 
@@ -68,7 +71,8 @@ export function LogTable({ collaboration, entries, onlyItem }: LogTableProps) {
               )}
               <Changes entry={entry} />
               <span className="block text-ink3 md:hidden">
-                {entry.action}, {addressWords(entry.address)}
+                {actionWords(entry)}
+                {entry.address !== null && `, from: ${addressWords(entry.address)}`}
               </span>
             </Cell>
             <Cell className="max-w-[220px] align-top max-md:hidden">
@@ -87,7 +91,7 @@ export function LogTable({ collaboration, entries, onlyItem }: LogTableProps) {
               </Link>
             </Cell>
             <Cell className="whitespace-nowrap align-top text-ink2 max-md:hidden">
-              {entry.action.replaceAll('-', ' ')}
+              {actionWords(entry)}
             </Cell>
             <Cell className="whitespace-nowrap align-top text-ink3 max-md:hidden">
               {addressWords(entry.address)}
