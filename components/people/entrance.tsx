@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react';
 import { Mark, Wordmark } from '@/components/ui/brand';
+import { Link } from '@/components/ui/link';
 import { SkipLink } from '@/components/ui/skip-link';
 import type { Theme } from '@/components/ui/theme';
 import { ThemeSwitch } from '@/components/ui/theme-switch';
@@ -31,7 +32,12 @@ export function Entrance({ theme, children }: { theme: Theme; children: ReactNod
         >
           {children}
         </main>
-        <ThemeSwitch initial={theme} />
+        <div className="flex flex-wrap items-center gap-x-6">
+          <ThemeSwitch initial={theme} />
+          <Link href="/help" className="flex min-h-11 items-center">
+            Help
+          </Link>
+        </div>
       </div>
       <SampleGrowthArt />
     </div>
