@@ -15,9 +15,21 @@ interface HelpPanelProps {
   onClose(): void;
 }
 
+/** Below this, half of the definitions would have to be scrolled [px]. */
+const ROOM_NEEDED = 340;
+
+/** Its height follows the room on its side, so it never finds by itself that there is too little. */
+function sideWithRoom(anchor: HTMLElement | null): 'top' | 'bottom' {
+  if (anchor === null) return 'bottom';
+  const { top, bottom } = anchor.getBoundingClientRect();
+  const below = window.innerHeight - bottom;
+  return below < ROOM_NEEDED && top > below ? 'top' : 'bottom';
+}
+
 /** A word's definition beside the place where it was asked for. */
 export function HelpPanel({ word: first, anchor, onClose }: HelpPanelProps) {
   const [word, setWord] = useState(first);
+  const [side] = useState(() => sideWithRoom(anchor.current));
   const { data, error } = useHelp(word);
   // What lies in a modal dialogue is above everything else: the panel has to open inside it.
   const container = anchor.current?.closest('dialog, [role="dialog"]') as HTMLElement | null;
@@ -27,6 +39,7 @@ export function HelpPanel({ word: first, anchor, onClose }: HelpPanelProps) {
       <Popover.Portal container={container ?? undefined}>
         <Popover.Content
           aria-label={data?.title ?? 'Definition'}
+          side={side}
           align="start"
           sideOffset={6}
           collisionPadding={12}
