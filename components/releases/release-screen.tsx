@@ -105,7 +105,7 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
           </Notice>
         )}
       </div>
-      <div className="grid gap-x-12 gap-y-8 pb-10 lg:grid-cols-2">
+      <div className="grid gap-x-12 gap-y-8 pb-10 lg:grid-cols-2 lg:grid-rows-[auto_1fr]">
         <section className="min-w-0">
           <SectionOpener number={1} title="Runs" />
           <ul className="text-note">
@@ -142,16 +142,8 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
             {release.replaces && `; replaces ${release.replaces.key}`}
             {release.replacedBy && `; replaced by ${release.replacedBy.key}`}
           </p>
-          <div className="mt-8">
-            <GuestLinks
-              collaboration={collaboration}
-              initial={links}
-              canEnd={release.can.link}
-              opens={release.key}
-            />
-          </div>
         </section>
-        <section className="min-w-0">
+        <section className="min-w-0 lg:row-span-2">
           <SectionOpener number={2} title="On its way to the public" />
           <ReleaseSteps release={release} busy={busy} onStep={step} />
           <div className="mt-5 flex flex-wrap gap-2">
@@ -173,6 +165,14 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
             <DepositPart collaboration={collaboration} release={release} initial={deposit} />
           )}
         </section>
+        <div className="min-w-0">
+          <GuestLinks
+            collaboration={collaboration}
+            initial={links}
+            canEnd={release.can.link}
+            opens={release.key}
+          />
+        </div>
       </div>
       <Dialog
         isOpen={isWithdrawing}
