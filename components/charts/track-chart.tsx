@@ -43,7 +43,10 @@ export function TrackChart(props: TrackChartProps) {
     : [Math.min(...all), Math.max(...all)];
   const [first, last] = [ageMyr[0], ageMyr[ageMyr.length - 1]];
   const x = scaleLog([first, last], [left, right]);
-  const y = scaleLinear(ends, isDifference ? [bottom, margin.top] : [margin.top, bottom]);
+  // A name on the outermost line must not lie on the axis.
+  const room = isDifference ? 0.06 * (ends[1] - ends[0]) : 0;
+  const drawn: [number, number] = [ends[0] - room, ends[1] + room];
+  const y = scaleLinear(drawn, isDifference ? [bottom, margin.top] : [margin.top, bottom]);
   const points = tracks.flatMap(({ massMjup, values }) =>
     [...values].flatMap((value, i) =>
       Number.isFinite(value)
@@ -79,7 +82,7 @@ export function TrackChart(props: TrackChartProps) {
         {subject}
       </text>
       <LeftAxis
-        ticks={linearTicks(...ends, bottom - margin.top, 40).filter(({ isMajor }) => isMajor)}
+        ticks={linearTicks(...drawn, bottom - margin.top, 40).filter(({ isMajor }) => isMajor)}
         scale={y}
         x={left}
         y0={bottom}

@@ -66,7 +66,7 @@ export function SubmissionTable(props: SubmissionTableProps) {
                 return (
                   <Row key={submission.id} className="[&>td]:align-top [&>th]:align-top">
                     {isEverybody && (
-                      <Cell isRowHead className="md:whitespace-nowrap">
+                      <Cell isRowHead className="min-w-[116px] md:whitespace-nowrap">
                         {at === 0 ? (
                           participant.person.name
                         ) : (
@@ -129,7 +129,7 @@ function WaitingRow({ participant, columns }: { participant: ParticipantView; co
   );
   return (
     <Row>
-      <Cell isRowHead className="md:whitespace-nowrap">
+      <Cell isRowHead className="min-w-[116px] md:whitespace-nowrap">
         {participant.person.name}
         <span className="block font-normal xl:hidden">{state}</span>
       </Cell>
