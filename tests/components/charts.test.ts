@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { CompletenessMapChart, mapTables } from '@/components/charts/completeness-map-chart';
 import { DepthChart } from '@/components/charts/depth-chart';
 import { isobands, isolines, type MapData } from '@/components/charts/map-contours';
+import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { areaPath, linePath, valueAt } from '@/components/charts/paths';
 import { halfOfTheSum, stackDots } from '@/components/charts/star-dots';
 import { evenTicks, linearTicks, logTicks, withUnit } from '@/components/charts/ticks';
@@ -19,6 +20,17 @@ function buildMap(): MapData {
   for (let row = 0; row < 21; row += 1) completeness.fill(row / 20, row * 31, (row + 1) * 31);
   return { massMjup, semiMajorAxisAu, completeness };
 }
+
+describe('the chart of detectable masses', () => {
+  it('names the lower line above its axis', () => {
+    const map = buildMap();
+    map.completeness.fill(0.6, 0, 31);
+    const markup = renderToStaticMarkup(createElement(MassLimitChart, { map, subject: 'a star' }));
+    const axis = Number(markup.match(/class="axis" x1="[\d.]+" x2="[\d.]+" y1="([\d.]+)"/)?.[1]);
+    const name = Number(markup.match(/y="([\d.]+)" text-anchor="middle">seen/)?.[1]);
+    expect(name).toBeLessThan(axis);
+  });
+});
 
 describe('isolines', () => {
   it('put each level at the mass where the map reaches it', () => {
