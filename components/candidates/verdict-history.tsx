@@ -1,15 +1,16 @@
 'use client';
 
+import { JupiterMass } from '@/components/ui/notation';
 import { StateMark } from '@/components/ui/state-mark';
 import { useMoment } from '@/components/ui/time-zone';
-import { formatAsymmetric, formatPlain } from '@/lib/quantities/display';
+import { formatAsymmetric, formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import type { VerdictView } from '@/lib/schemas/candidates';
 import { originWords, statusMarks, statusWords } from './status-words';
 
 /** A value with its errors where there are any: "8.2 +2.9 −2.2 AU". */
 export function withErrors(value: number, errors: [number, number] | null, unit: string): string {
   return errors === null
-    ? `${formatPlain(value, 3)} ${unit}`.trim()
+    ? `${formatPlain(value, 3)}${unit === '' ? '' : `${THIN_SPACE}${unit}`}`
     : formatAsymmetric(value, errors[0], errors[1], unit);
 }
 
@@ -18,17 +19,23 @@ export const standingVerdict = (history: VerdictView[]) =>
   [...history].reverse().find(({ isProposal }) => !isProposal);
 
 /** Mass and axis of a verdict, each with how it came about. */
-export function placeWords(verdict: VerdictView): string {
+function Place({ verdict }: { verdict: VerdictView }) {
   const { massMjup, massErrorsMjup, semiMajorAxisAu, semiMajorAxisErrorsAu } = verdict;
-  const parts = [
-    massMjup === null
-      ? ''
-      : `${withErrors(massMjup, massErrorsMjup, 'Jupiter masses')}, ${originWords(verdict.massFrom)}`,
-    semiMajorAxisAu === null
-      ? ''
-      : `${withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, 'AU')}, ${originWords(verdict.semiMajorAxisFrom)}`,
-  ];
-  return parts.filter((part) => part !== '').join('; ');
+  if (massMjup === null && semiMajorAxisAu === null) return null;
+  return (
+    <p className="text-ink3">
+      {massMjup !== null && (
+        <>
+          {withErrors(massMjup, massErrorsMjup, '')}
+          {THIN_SPACE}
+          <JupiterMass />, {originWords(verdict.massFrom)}
+        </>
+      )}
+      {massMjup !== null && semiMajorAxisAu !== null && '; '}
+      {semiMajorAxisAu !== null &&
+        `${withErrors(semiMajorAxisAu, semiMajorAxisErrorsAu, 'AU')}, ${originWords(verdict.semiMajorAxisFrom)}`}
+    </p>
+  );
 }
 
 /** Every verdict and proposal, newest first: who, when, why, on what. */
@@ -53,7 +60,7 @@ export function VerdictHistory({ history }: { history: VerdictView[] }) {
             </span>
           </div>
           <p className="mt-0.5 max-w-[72ch] break-words">{verdict.reason}</p>
-          {placeWords(verdict) !== '' && <p className="text-ink3">{placeWords(verdict)}</p>}
+          <Place verdict={verdict} />
         </li>
       ))}
     </ol>

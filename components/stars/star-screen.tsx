@@ -8,6 +8,7 @@ import { RampKey } from '@/components/charts/ramp-key';
 import { decidePair, useStar } from '@/components/hooks/use-stars';
 import { useMap } from '@/components/hooks/use-surveys';
 import { Link } from '@/components/ui/link';
+import { JupiterMass } from '@/components/ui/notation';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
@@ -222,8 +223,7 @@ export function StarScreen({
                 <>
                   , {formatPlain(one.massMjup, 3)}
                   {'\u00a0'}
-                  <i>M</i>
-                  <sub>J</sub>
+                  <JupiterMass />
                 </>
               )}
               {one.semiMajorAxisAu !== null && ` at ${formatPlain(one.semiMajorAxisAu, 3)}\u00a0AU`}

@@ -1,5 +1,6 @@
 import { statusMarks, statusWords } from '@/components/candidates/status-words';
 import { Link } from '@/components/ui/link';
+import { JupiterMass } from '@/components/ui/notation';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { CompanionView } from '@/lib/schemas/surveys';
@@ -36,7 +37,7 @@ export function CompanionTable({
           <HeadCell>companion</HeadCell>
           <HeadCell>status</HeadCell>
           <HeadCell isNumeric>
-            mass, M<sub>J</sub>
+            mass, <JupiterMass />
           </HeadCell>
           <HeadCell isNumeric>semi-major axis, AU</HeadCell>
           <HeadCell isNumeric>probability of being bound</HeadCell>
