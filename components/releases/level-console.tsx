@@ -63,7 +63,7 @@ export function LevelConsole({ run }: { run: ShownRun }) {
           </p>
           <p className="mt-1 max-w-[52ch] text-ink2 text-note">
             {isReleased
-              ? 'As released. Move the level, or set the detections aside.'
+              ? `As released. Move the level${counted.length > 0 ? ', or set the detections aside' : ''}.`
               : `In place of the released ${formatLimit(answer.limit, quantity)} at ${describeLevel(credibleLevel)}. The frozen posterior is used as it is.`}
           </p>
           <div className="mt-3 flex flex-wrap gap-2">
@@ -89,9 +89,11 @@ export function LevelConsole({ run }: { run: ShownRun }) {
       </div>
       {run.alternatives.length > 0 && (
         <div className="mt-4 border-rule border-t pt-3">
-          <h4 className="mb-1 font-semibold text-note">
-            Asked of the same run, with its frozen maps
-          </h4>
+          <h4 className="font-semibold text-note">Asked of the same run, with its frozen maps</h4>
+          <p className="mb-1 max-w-[72ch] text-chart text-ink3">
+            Limits at {describeLevel(credibleLevel)}, as released; they do not follow the controls
+            above.
+          </p>
           <dl className="grid gap-x-4 gap-y-1 text-note md:grid-cols-[minmax(0,220px)_1fr]">
             {run.alternatives.map(({ kind, name, headline }) => (
               <div key={kind} className="contents">

@@ -1,4 +1,5 @@
-import type { StudyKind } from '@/lib/schemas/study-settings';
+import { parameterWithUnit } from '@/lib/inference/sweep-parameters';
+import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 
 /** What each further question is called. */
 export const studyNames: Record<StudyKind, string> = {
@@ -14,3 +15,10 @@ export const studyNames: Record<StudyKind, string> = {
   forecast: 'Forecast',
   calibration: 'Calibration',
 };
+
+/** The same of one that was asked: a sweep names its parameter and the unit. */
+export function nameOfStudy(settings: StudySettings): string {
+  return settings.kind === 'sweep'
+    ? `Limit against ${parameterWithUnit(settings.over)}`
+    : studyNames[settings.kind];
+}

@@ -1,3 +1,4 @@
+import { quotedValue } from '@/lib/inference/sweep-parameters';
 import {
   formatLimit,
   formatPercent,
@@ -72,15 +73,15 @@ const headlines: { [Kind in StudyKind]: Headline<Kind> } = {
     return `${formatLimit(lowest, quantity)} at best, at ${place}`;
   },
 
-  sweep: ({ limit, value, plane }, { quantity }) => {
+  sweep: ({ over, limit, value, plane }, { quantity }) => {
     if (plane) {
       const all = plane.limit.flat();
       return `From ${formatLimit(Math.min(...all), quantity)} to ${formatLimit(Math.max(...all), quantity)} over both indices`;
     }
     const last = value.length - 1;
     return (
-      `${formatLimit(limit[0], quantity)} at ${formatPlain(value[0])}, ` +
-      `${formatLimit(limit[last], quantity)} at ${formatPlain(value[last])}`
+      `${formatLimit(limit[0], quantity)} at ${formatPlain(quotedValue(over, value[0]))}, ` +
+      `${formatLimit(limit[last], quantity)} at ${formatPlain(quotedValue(over, value[last]))}`
     );
   },
 

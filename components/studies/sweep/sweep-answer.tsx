@@ -4,11 +4,12 @@ import { useMemo } from 'react';
 import { LimitFieldChart } from '@/components/charts/limit-field-chart';
 import { LimitSweepChart } from '@/components/charts/limit-sweep-chart';
 import { describeLevel } from '@/lib/inference';
+import { quotedValue } from '@/lib/inference/sweep-parameters';
 import { fromLogIndex } from '@/lib/population';
 import { formatLimit } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
 import type { AnswerProps } from '../kind-entry';
-import { ownValue, quotedValue, sweepAxis } from './sweep-parameters';
+import { ownValue, sweepAxis } from './sweep-parameters';
 
 /** The limit along one choice, or over the plane of both indices. */
 export function SweepAnswer(props: AnswerProps<'sweep'>) {

@@ -3,19 +3,18 @@
 import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
+import {
+  quotedValue,
+  type SweepParameter,
+  sweepParameters,
+} from '@/lib/inference/sweep-parameters';
 import { toLogIndex } from '@/lib/population';
 import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import { sweepParameterSchema, sweepSettingsSchema } from '@/lib/schemas/study-settings';
 import type { FormProps } from '../kind-entry';
 import { SettingsFrame } from '../settings-frame';
 import { readNumber, useSettingsForm } from '../use-settings-form';
-import {
-  ownValue,
-  quotedValue,
-  type SweepParameter,
-  sweepParameters,
-  usualSpan,
-} from './sweep-parameters';
+import { ownValue, usualSpan } from './sweep-parameters';
 
 const FIRST: SweepParameter = 'semi-major-axis-max';
 /** A plane of both takes the square of it. */

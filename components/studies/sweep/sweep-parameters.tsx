@@ -2,36 +2,14 @@ import type { ReactNode } from 'react';
 import { JupiterMassText } from '@/components/charts/axes';
 import type { FieldAxis } from '@/components/charts/limit-field-chart';
 import { formatIndex } from '@/components/populations/law-notation';
-import { fromLogIndex } from '@/lib/population';
+import {
+  quotedValue,
+  type SweepParameter,
+  sweepParameters,
+} from '@/lib/inference/sweep-parameters';
 import { formatPlain } from '@/lib/quantities/display';
 import type { DrawnInputs } from '@/lib/schemas/runs';
-import type { SettingsOf } from '@/lib/schemas/study-settings';
 import type { AskedRun } from '../kind-entry';
-
-export type SweepParameter = SettingsOf<'sweep'>['over'];
-
-interface Parameter {
-  /** "largest semi-major axis". */
-  name: string;
-  unit: 'AU' | 'MJ' | 'index';
-}
-
-export const sweepParameters: Record<SweepParameter, Parameter> = {
-  'semi-major-axis-max': { name: 'largest semi-major axis', unit: 'AU' },
-  'semi-major-axis-min': { name: 'smallest semi-major axis', unit: 'AU' },
-  'mass-min': { name: 'smallest planet mass', unit: 'MJ' },
-  'mass-max': { name: 'largest planet mass', unit: 'MJ' },
-  'mass-index': { name: 'mass index', unit: 'index' },
-  'semi-major-axis-index': { name: 'semi-major-axis index', unit: 'index' },
-  'both-indices': { name: 'both indices', unit: 'index' },
-};
-
-/** Indices are stored per natural logarithm and quoted as dN/dM and dN/da. */
-export function quotedValue(over: SweepParameter, stored: number): number {
-  return sweepParameters[over].unit === 'index'
-    ? Number(fromLogIndex(stored, 'linear').toFixed(9))
-    : stored;
-}
 
 const symbols: Partial<Record<SweepParameter, ReactNode>> = {
   'mass-index': (

@@ -1,6 +1,6 @@
 import type { DataTable } from '@/components/charts/data-table';
+import { sweepParameters } from '@/lib/inference/sweep-parameters';
 import type { AnswerProps } from '../kind-entry';
-import { sweepParameters } from './sweep-parameters';
 
 const suffix = { AU: '_au', MJ: '_mjup', index: '_per_log' };
 

@@ -1,6 +1,6 @@
+import { quotedValue, sweepParameters } from '@/lib/inference/sweep-parameters';
 import { formatRange } from '@/lib/quantities/display';
 import type { SettingsOf } from '@/lib/schemas/study-settings';
-import { quotedValue, sweepParameters } from './sweep-parameters';
 
 /** "largest semi-major axis 30–1000 AU, 31 values". */
 export function sweepInWords({ over, from, to, count }: SettingsOf<'sweep'>): string {

@@ -21,7 +21,7 @@ import { findDeposit } from '../deposits/deposits';
 import { type FinishedRun, type ReleaseFacts, statedRange } from '../export-limits';
 import { writeMethods } from '../exports/methods';
 import { findTombstone } from '../leaving/tombstones';
-import { studyNames } from '../study-words';
+import { nameOfStudy } from '../study-words';
 import { addressOfRelease } from './address';
 import { factsOfRelease } from './facts';
 
@@ -36,7 +36,7 @@ async function showRun(runId: string, release?: ReleaseFacts): Promise<ShownRun>
     AnalysisRow.findByPk(run.analysisId, { rejectOnEmpty: true }),
     PopulationRow.findByPk(run.recipe.populationId, { rejectOnEmpty: true }),
     StudyRow.findAll({
-      attributes: ['kind', 'headline', 'number'],
+      attributes: ['kind', 'headline', 'number', 'settings'],
       where: { runId, headline: { [Op.not]: null } },
       order: [['number', 'DESC']],
     }),
@@ -82,9 +82,9 @@ async function showRun(runId: string, release?: ReleaseFacts): Promise<ShownRun>
     resultDigest,
     snapshotSha256: frozen.snapshotSha256,
     methods: { text: writeMethods(finished, 'txt'), latex: writeMethods(finished, 'tex') },
-    alternatives: [...newest.values()].map(({ kind, headline }) => ({
+    alternatives: [...newest.values()].map(({ kind, settings, headline }) => ({
       kind,
-      name: studyNames[kind],
+      name: nameOfStudy(settings),
       headline: headline ?? '',
     })),
   };
