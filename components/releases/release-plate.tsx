@@ -4,7 +4,7 @@ import { PosteriorChart } from '@/components/charts/posterior-chart';
 import type { RateCurve } from '@/components/charts/rate-curve';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { Conditions, conditionRow, Plate, StatementNumber } from '@/components/ui/plate';
-import { describeLevel, describePrior } from '@/lib/inference';
+import { countsAnything, describeLevel, describePrior } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { ShownRun } from '@/lib/schemas/release-page';
 import type { RateAnswer } from '@/lib/schemas/runs';
@@ -17,7 +17,7 @@ export const curveOf = ({ curve }: RateAnswer): RateCurve => ({
 
 /** The limit as a sentence, its posterior, and every condition as the run stated it. */
 export function ReleasePlate({ run }: { run: ShownRun }) {
-  const { answer, zero, quantity, credibleLevel, counted, statement } = run.result;
+  const { answer, zero, quantity, credibleLevel, counted, candidates, statement } = run.result;
   const isFraction = quantity === 'host_fraction';
   return (
     <Plate>
@@ -53,7 +53,7 @@ export function ReleasePlate({ run }: { run: ShownRun }) {
             credibleLevel={credibleLevel}
             quantity={quantity}
             median={answer.median}
-            interval68={answer.interval68}
+            interval68={countsAnything(counted, candidates) ? answer.interval68 : undefined}
             prior={
               answer.curve.prior.length > 0
                 ? {

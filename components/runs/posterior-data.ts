@@ -11,11 +11,13 @@ interface PosteriorInputs {
   answer: LimitAnswer;
   zero?: LimitAnswer;
   saved?: LimitAnswer;
+  /** Something was counted: of none only the limit is quoted, and no band is drawn. */
+  hasInterval: boolean;
 }
 
 /** What the plate draws: the posterior, its prior, and what it is compared with. */
 export function posteriorData(inputs: PosteriorInputs): PosteriorData {
-  const { setting, quantity, answer, zero, saved } = inputs;
+  const { setting, quantity, answer, zero, saved, hasInterval } = inputs;
   const largest = quantity === 'host_fraction' ? 1 : Number.POSITIVE_INFINITY;
   const top = rateAxisMax(
     [answer, zero, saved].flatMap((one) => (one === undefined ? [] : [one.limit])),
@@ -31,7 +33,7 @@ export function posteriorData(inputs: PosteriorInputs): PosteriorData {
     credibleLevel: setting.credibleLevel,
     quantity,
     median: answer.median,
-    interval68: answer.interval68,
+    interval68: hasInterval ? answer.interval68 : undefined,
     prior: density.some(Number.isFinite)
       ? { density, label: priorLabel(setting.prior, quantity) }
       : undefined,

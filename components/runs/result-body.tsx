@@ -21,7 +21,7 @@ import { FootBar } from '@/components/ui/foot-bar';
 import { Notice } from '@/components/ui/notice';
 import { Plate } from '@/components/ui/plate';
 import { TextAction } from '@/components/ui/text-action';
-import { describeLevel } from '@/lib/inference';
+import { countsAnything, describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
@@ -313,6 +313,7 @@ const ResultPlate = memo(function ResultPlate({
           quantity,
           answer: shown.answer,
           zero: shown.counted.length > 0 ? shown.zero : undefined,
+          hasInterval: countsAnything(shown.counted, shown.candidates),
           saved: isLive && !isOfRun && saved.quantity === quantity ? saved.answer : undefined,
         })}
         view={view}

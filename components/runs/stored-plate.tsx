@@ -4,7 +4,7 @@ import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
 import { Conditions, conditionRow, Plate, StatementNumber } from '@/components/ui/plate';
-import { describeLevel } from '@/lib/inference';
+import { countsAnything, describeLevel } from '@/lib/inference';
 import { formatSignificant, THIN_SPACE } from '@/lib/quantities/display';
 import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
@@ -34,6 +34,7 @@ export function StoredPlate({ collaboration, run, definition, result }: StoredPl
         quantity,
         answer: savedAnswer(answer),
         zero: counted.length > 0 ? savedAnswer(result.zero) : undefined,
+        hasInterval: countsAnything(counted, result.candidates),
       }),
     [prior, credibleLevel, quantity, answer, counted, result],
   );

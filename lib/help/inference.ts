@@ -188,7 +188,7 @@ export const inferenceWords = entries('inference', {
   'credible-interval': {
     title: 'Intervals',
     kind: 'quantity',
-    definition: raw`Equal-tailed: as much probability below as above. Highest density: the shortest; it depends on whether the rate or its logarithm is measured, here the rate itself. If the density falls from the lower edge, the shortest interval starts there.`,
+    definition: raw`Equal-tailed: as much probability below as above. Highest density: the shortest; it depends on whether the rate or its logarithm is measured, here the rate itself. If the density falls from the lower edge, the shortest interval starts there. Screens and the methods paragraph quote the equal-tailed one, and only where something was counted; files hold both.`,
     formulas: [
       {
         tex: raw`P(F<F_1)=P(F>F_2)=\tfrac{1-\mathrm{CL}}2`,

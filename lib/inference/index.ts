@@ -98,6 +98,7 @@ export type {
 export {
   candidateTreatment,
   countCandidates,
+  countsAnything,
   describeBackground,
   describeCandidates,
 } from './open-candidates';

@@ -6,7 +6,12 @@ import {
   type RateQuantity,
 } from '@/lib/quantities/display';
 import type { RatePrior } from './contract';
-import { describeBackground } from './open-candidates';
+import {
+  countsAnything,
+  describeBackground,
+  describeCandidates,
+  type StatedCandidates,
+} from './open-candidates';
 import { describePlanets, describePopulation } from './population-words';
 import type { ReferenceKey } from './references';
 import { describeLevel, describePrior } from './statement';
@@ -32,13 +37,13 @@ export interface MethodsFacts {
   credibleLevel: number;
   counted: string[];
   countingRule: string;
-  candidates: string | null;
+  candidates: StatedCandidates | null;
   background: number | null;
   exposure: number;
   answer: {
     limit: number;
     median: number;
-    highestDensity68: readonly [number, number];
+    interval68: readonly [number, number];
     isConstrained: boolean;
     isSetByPrior: boolean;
   };
@@ -126,7 +131,9 @@ function modelSentences(facts: MethodsFacts): MethodsPart[] {
     ` We ask about ${describePlanets(population)}, distributed as ${describePopulation(population)}.`,
     ` Averaged over this population, the detection probabilities sum to ${formatSignificant(exposure, 3)} of ${count(stars, 'star')}.`,
     ` ${detectionWords(facts)}.`,
-    ...(facts.candidates === null ? [] : [` Candidates without an answer: ${facts.candidates}.`]),
+    ...(facts.candidates === null
+      ? []
+      : [` Candidates without an answer: ${describeCandidates(facts.candidates)}.`]),
     ...(background
       ? [
           ` Background: ${describeBackground(background)}`,
@@ -141,14 +148,17 @@ function modelSentences(facts: MethodsFacts): MethodsPart[] {
 }
 
 function answerSentences(facts: MethodsFacts): MethodsPart[] {
-  const { answer, quantity, credibleLevel, zeroLimit, beside } = facts;
+  const { answer, quantity, credibleLevel, zeroLimit, beside, counted, candidates } = facts;
   const level = describeLevel(credibleLevel);
   if (!answer.isConstrained)
     return [' The data do not constrain the rate: the posterior is the prior.'];
-  const [low, high] = answer.highestDensity68;
+  const [low, high] = answer.interval68;
+  const interval = countsAnything(counted, candidates)
+    ? `, equal-tailed 68\u2009% interval ${formatInterval(low, high, quantity)}`
+    : '';
   const parts: MethodsPart[] = [
     ` The ${level} credible upper limit is ${formatRate(answer.limit, quantity)}`,
-    ` (posterior median ${formatRate(answer.median, quantity)}, shortest 68\u2009% interval ${formatInterval(low, high, quantity)}).`,
+    ` (posterior median ${formatRate(answer.median, quantity)}${interval}).`,
   ];
   if (answer.isSetByPrior) parts.push(' This limit is set by the prior and not by the data.');
   if (zeroLimit !== null) {

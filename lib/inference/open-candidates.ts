@@ -88,6 +88,14 @@ export interface StatedCandidates {
   entries: readonly { name: string; probability: number | null }[];
 }
 
+/** Whether a companion or a candidate counts: only then is an interval quoted beside the limit. */
+export const countsAnything = (
+  counted: readonly unknown[],
+  candidates: Pick<StatedCandidates, 'treatment' | 'entries'> | null | undefined,
+) =>
+  counted.length > 0 ||
+  (candidates != null && candidates.treatment !== 'set-aside' && candidates.entries.length > 0);
+
 const named = (entries: StatedCandidates['entries']) =>
   entries
     .map(({ name, probability }) =>

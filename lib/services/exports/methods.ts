@@ -1,7 +1,6 @@
 import { latexProse } from '@/lib/formats';
 import { citeAsBibtex } from '@/lib/formats/bundle';
 import { writeBibtexEntry } from '@/lib/formats/write-bibtex';
-import { describeCandidates } from '@/lib/inference';
 import { citedReferences, type MethodsPart, methodsParagraph } from '@/lib/inference/methods-text';
 import { type ReferenceKey, references } from '@/lib/inference/references';
 import { countedDetections, countingRule, type FinishedRun, stateOf } from '../export-limits';
@@ -30,7 +29,7 @@ export function paragraphOfRun(run: FinishedRun): MethodsPart[] {
     credibleLevel: result.credibleLevel,
     counted: counted.map(({ name }) => name),
     countingRule: countingRule(run, false, result.quantity),
-    candidates: result.candidates ? describeCandidates(result.candidates) : null,
+    candidates: result.candidates,
     background: result.background,
     exposure: result.exposure,
     answer: result.answer,
