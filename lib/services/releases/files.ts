@@ -108,7 +108,7 @@ const makers: readonly ReleaseFileMaker[] = [
     of: 'release',
     make: async (release) => ({
       mediaType: 'application/zip',
-      description: 'All of it, with the recipe to run it again',
+      description: 'Inputs, results and recipe, to compute it again',
       bytes: await writeBundle(
         {
           name: release.title,
