@@ -125,6 +125,7 @@ export const CompletenessMapChart = memo(function CompletenessMapChart(
         detections={detections}
         frame={frame}
         taken={[...numbers.map((place) => place.box), ...marks]}
+        range={box}
       />
       {at && <CursorRing x={places.columns[at.column]} y={places.rows[at.row]} />}
       <MapAxes map={map} frame={frame} />
@@ -172,9 +173,19 @@ function mapSentence(
     `Map of ${subject} over semi-major axis and planet mass: highest ${formatPercent(map.completeness[best])} at ${formatPlain(mass, 2)} Jupiter masses and ${formatPlain(axis, 2)} AU`,
     range &&
       `range ${formatRange(range.massMinMjup, range.massMaxMjup, 'Jupiter masses')} at ${formatRange(range.semiMajorAxisMinAu, range.semiMajorAxisMaxAu, 'AU')}`,
-    detections.length > 0 && `detections: ${detections.map(({ name }) => name).join(', ')}`,
+    ...byStanding(detections).map(
+      ({ caption, marks }) => `${caption}: ${marks.map(({ name }) => name).join(', ')}`,
+    ),
   ];
   return parts.filter(Boolean).join('; ');
+}
+
+/** Those that count, and those that do not; none of a kind without a mark. */
+function byStanding(detections: MapDetection[]) {
+  return [
+    { caption: 'detections', marks: detections.filter(({ isAside }) => !isAside) },
+    { caption: 'companions that do not count', marks: detections.filter(({ isAside }) => isAside) },
+  ].filter(({ marks }) => marks.length > 0);
 }
 
 function sayNode(map: MapData, { column, row }: ReadPlace): string[] {
@@ -219,11 +230,11 @@ export function mapTables(map: MapData, subject: string, detections: MapDetectio
       ]),
     },
   ];
-  if (detections.length > 0) {
+  for (const { caption, marks } of byStanding(detections)) {
     tables.push({
-      caption: 'Detections',
+      caption,
       columns: ['name', 'mass, Jupiter masses', 'semi-major axis, AU'],
-      rows: detections.map((it) => [
+      rows: marks.map((it) => [
         it.name,
         withError(it.massMjup, it.massErrorMjup),
         withError(it.semiMajorAxisAu, it.semiMajorAxisErrorAu),

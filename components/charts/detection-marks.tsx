@@ -8,26 +8,34 @@ export interface MapDetection {
   massErrorMjup?: number;
   semiMajorAxisAu: number;
   semiMajorAxisErrorAu?: number;
+  /** Known, but not counted: drawn as an open ring. */
+  isAside?: boolean;
 }
 
-/** White dots with error bars and names; a name takes the first free place around its dot. */
+/**
+ * White dots with error bars and names; a name takes the first free place around its dot, one clear
+ * of the edges of the range before one that crosses them.
+ */
 export function DetectionMarks({
   detections,
   frame,
   taken,
+  range,
 }: {
   detections: MapDetection[];
   frame: MapFrame;
   taken: Box[];
+  range?: Box;
 }) {
   const occupied = [...taken];
+  const edges = range ? edgesOf(range) : [];
   return detections.map((detection) => {
     const x = frame.x(detection.semiMajorAxisAu);
     const y = frame.y(detection.massMjup);
-    const place = freePlace(detection.name, x, y, frame, occupied);
+    const place = freePlace(detection.name, x, y, frame, occupied, edges);
     occupied.push(place.box, { left: x - 8, right: x + 8, top: y - 8, bottom: y + 8 });
     return (
-      <g key={detection.name} className="detection">
+      <g key={detection.name} className={detection.isAside ? 'detection is-aside' : 'detection'}>
         {detection.semiMajorAxisErrorAu !== undefined && (
           <line
             x1={bar(
@@ -68,7 +76,17 @@ function bar(scale: (value: number) => number, value: number, error: number, edg
   return value + error > 0 ? scale(value + error) : edge;
 }
 
-function freePlace(name: string, x: number, y: number, frame: Box, occupied: Box[]) {
+/** The four sides of a box as narrow boxes. */
+function edgesOf(box: Box): Box[] {
+  return [
+    { ...box, left: box.left - 2, right: box.left + 2 },
+    { ...box, left: box.right - 2, right: box.right + 2 },
+    { ...box, top: box.top - 2, bottom: box.top + 2 },
+    { ...box, top: box.bottom - 2, bottom: box.bottom + 2 },
+  ];
+}
+
+function freePlace(name: string, x: number, y: number, frame: Box, occupied: Box[], edges: Box[]) {
   const width = textWidth(name, 13.5);
   const places = [
     { x, y: y + 24, anchor: 'middle' as const, left: x - width / 2 },
@@ -76,18 +94,21 @@ function freePlace(name: string, x: number, y: number, frame: Box, occupied: Box
     { x: x + 10, y: y - 11, anchor: 'start' as const, left: x + 10 },
     { x, y: y - 16, anchor: 'middle' as const, left: x - width / 2 },
     { x: x + 12, y: y + 18, anchor: 'start' as const, left: x + 12 },
+    { x: x - 12, y: y + 18, anchor: 'end' as const, left: x - 12 - width },
+    { x: x + 12, y: y + 5, anchor: 'start' as const, left: x + 12 },
+    { x: x - 12, y: y + 5, anchor: 'end' as const, left: x - 12 - width },
   ].map((place) => ({
     ...place,
     box: { left: place.left, right: place.left + width, top: place.y - 13, bottom: place.y + 4 },
   }));
-  return (
-    places.find(
-      ({ box }) =>
-        box.left > frame.left &&
-        box.right < frame.right &&
-        box.top > frame.top &&
-        box.bottom < frame.bottom &&
-        !occupied.some((other) => boxesMeet(box, other)),
-    ) ?? places[0]
+  const isClear = (box: Box, marks: Box[]) => !marks.some((mark) => boxesMeet(box, mark));
+  const free = places.filter(
+    ({ box }) =>
+      box.left > frame.left &&
+      box.right < frame.right &&
+      box.top > frame.top &&
+      box.bottom < frame.bottom &&
+      isClear(box, occupied),
   );
+  return free.find(({ box }) => isClear(box, edges)) ?? free[0] ?? places[0];
 }

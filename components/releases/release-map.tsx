@@ -6,9 +6,9 @@ import { RampKey } from '@/components/charts/ramp-key';
 import { asMark } from '@/components/runs/sensitivity-section';
 import type { ShownRun } from '@/lib/schemas/release-page';
 
-/** Mean completeness of the stars, with the range and the companions that were known. */
+/** Mean completeness of the stars, with the range, the companions that count and those that do not. */
 export function ReleaseMap({ run }: { run: ShownRun }) {
-  const { meanMap, stars } = run.result;
+  const { meanMap, stars, counted } = run.result;
   const map = useMemo(
     () => ({
       massMjup: Float64Array.from(meanMap.massMjup),
@@ -17,6 +17,10 @@ export function ReleaseMap({ run }: { run: ShownRun }) {
     }),
     [meanMap],
   );
+  const marks = useMemo(() => {
+    const names = new Set(counted.map(({ name }) => name));
+    return run.companions.map((one) => ({ ...asMark(one), isAside: !names.has(one.name) }));
+  }, [run.companions, counted]);
   const { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } = run.range;
   const isBox =
     massMinMjup !== null &&
@@ -31,10 +35,15 @@ export function ReleaseMap({ run }: { run: ShownRun }) {
         range={
           isBox ? { massMinMjup, massMaxMjup, semiMajorAxisMinAu, semiMajorAxisMaxAu } : undefined
         }
-        detections={run.companions.map(asMark)}
+        detections={marks}
         height={340}
       />
       <RampKey label="detection probability, %" />
+      {marks.some(({ isAside }) => isAside) && (
+        <p className="mt-1 text-chart text-ink3">
+          Open rings: companions that do not count, set aside or outside the ranges.
+        </p>
+      )}
     </>
   );
 }
