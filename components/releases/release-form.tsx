@@ -17,12 +17,15 @@ import { TextField } from '@/components/ui/text-field';
 import { licences } from '@/lib/schemas/licences';
 import { AuthorFields } from './author-fields';
 import { draftOf, draftWords, type ReleaseDraft } from './release-draft';
+import { furtherGround } from './release-words';
 
 /** A frozen run that may be part of a release. */
 export interface FrozenChoice {
   id: string;
   name: string;
   sentence: string;
+  prior: string;
+  detections: string;
 }
 
 interface ReleaseFormProps {
@@ -112,6 +115,7 @@ export function ReleaseForm(props: ReleaseFormProps) {
                 <CheckboxField
                   key={choice.id}
                   label={`${choice.name}: ${choice.sentence}`}
+                  hint={furtherGround(choice)}
                   checked={draft.runIds.includes(choice.id)}
                   onChange={() => toggle(choice.id)}
                 />

@@ -29,7 +29,7 @@ import { GiveLink } from './give-link';
 import { GuestLinks } from './guest-links';
 import { draftOf } from './release-draft';
 import { ReleaseSteps } from './release-steps';
-import { shortDigest, stateWords } from './release-words';
+import { furtherGround, shortDigest, stateWords } from './release-words';
 
 interface ReleaseScreenProps {
   collaboration: string;
@@ -120,7 +120,9 @@ export function ReleaseScreen(props: ReleaseScreenProps) {
                     {describeLevel(run.credibleLevel)})
                   </span>
                 </p>
-                <p>{run.sentence}.</p>
+                <p>
+                  {run.sentence}, {furtherGround(run)}.
+                </p>
                 <p className="text-ink3">
                   frozen by {run.frozenBy}; result{' '}
                   <span title={run.resultDigest}>{shortDigest(run.resultDigest)}</span>

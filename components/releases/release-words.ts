@@ -12,6 +12,10 @@ export const stateWords: Record<ReleaseState, { kind: StateKind; words: string }
   withdrawn: { kind: 'stopped', words: 'withdrawn' },
 };
 
+/** Of a limit whose sentence says the ranges: the prior, and what counted. */
+export const furtherGround = ({ prior, detections }: { prior: string; detections: string }) =>
+  `${detections}; prior ${prior}`;
+
 /** "18 MB", "4.2 kB". */
 export function sizeWords(bytes: number): string {
   if (bytes < 1000) return `${bytes} B`;

@@ -14,7 +14,7 @@ import type { BundleImportView } from '@/lib/schemas/bundles';
 import type { GuestLinkView, ReleaseView } from '@/lib/schemas/releases';
 import { BundlePanel } from './bundle-panel';
 import { GuestLinks } from './guest-links';
-import { stateWords } from './release-words';
+import { furtherGround, stateWords } from './release-words';
 
 interface ReleasesScreenProps {
   collaboration: string;
@@ -50,7 +50,7 @@ export function ReleasesScreen(props: ReleasesScreenProps) {
         <section className="min-w-0">
           <SectionOpener
             title="All releases"
-            context="limits with their level; ranges and prior on each page"
+            context="limits with their level, and what they rest on"
           />
           <ReleaseTable collaboration={collaboration} releases={releases} />
         </section>
@@ -79,7 +79,7 @@ function ReleaseTable({
           <HeadCell>title</HeadCell>
           <HeadCell>limit</HeadCell>
           <HeadCell>runs</HeadCell>
-          <HeadCell>state</HeadCell>
+          <HeadCell className="max-md:hidden">state</HeadCell>
           <HeadCell>date</HeadCell>
         </tr>
       </TableHead>
@@ -92,12 +92,20 @@ function ReleaseTable({
               <Cell isRowHead className="whitespace-nowrap">
                 <Link href={`/${collaboration}/releases/${release.key}`}>{release.key}</Link>
               </Cell>
-              <Cell className="min-w-56">{release.title}</Cell>
-              <Cell className="whitespace-nowrap">
+              <Cell className="min-w-36 md:min-w-56">
+                {release.title}
+                <span className="block md:hidden">
+                  <StateMark kind={kind}>{words}</StateMark>
+                </span>
+              </Cell>
+              <Cell className="min-w-40 md:min-w-72">
                 {first && (
                   <>
                     <span className="limit">{formatLimit(first.limit, first.quantity)}</span> (
                     {describeLevel(first.credibleLevel)})
+                    <span className="block text-chart text-ink3">
+                      {first.ranges}, {furtherGround(first)}
+                    </span>
                   </>
                 )}
               </Cell>
@@ -106,7 +114,7 @@ function ReleaseTable({
                   .map(({ analysisKey, number }) => `${analysisKey}, run ${number}`)
                   .join('; ')}
               </Cell>
-              <Cell className="whitespace-nowrap">
+              <Cell className="whitespace-nowrap max-md:hidden">
                 <StateMark kind={kind}>{words}</StateMark>
               </Cell>
               <Cell className="whitespace-nowrap">

@@ -107,6 +107,10 @@ export const releaseRunSchema = z.object({
   analysisKey: z.string(),
   analysisName: z.string(),
   sentence: z.string(),
+  /** What the limit rests on, in words: the ranges, the prior, and what counted. */
+  ranges: z.string(),
+  prior: z.string(),
+  detections: z.string(),
   limit: z.number(),
   credibleLevel: z.number(),
   quantity: z.enum(['companions_per_star', 'host_fraction']),

@@ -107,7 +107,7 @@ const extreme = (which: 'min' | 'max', column: string) =>
   `(select ${which}(x::float8) from jsonb_array_elements_text(p.definition->'${column}') x)`;
 
 /** Of tabulated systems counts and box, as `summariseSystems` gives them; all others whole. */
-const LISTED_DEFINITION = `case when p.definition->>'form' = 'systems' then jsonb_build_object(
+export const LISTED_DEFINITION = `case when p.definition->>'form' = 'systems' then jsonb_build_object(
   'form', 'systems',
   'systems', jsonb_array_length(p.definition->'weight'),
   'companions', jsonb_array_length(p.definition->'companionSystem'),

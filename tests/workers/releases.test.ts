@@ -23,6 +23,7 @@ import {
 import { POST as writeNote } from '@/app/api/v1/guest/[token]/notes/route';
 import { GET as getFile } from '@/app/api/v1/releases/[code]/files/[file]/route';
 import { packFiles, unpackFiles } from '@/lib/formats/bundle';
+import { describePrior } from '@/lib/inference';
 import { freezeStandingSchema, newGuestLinkSchema } from '@/lib/schemas/releases';
 import { readAsGuest } from '@/lib/services/releases/guest-links';
 import { listImports } from '@/lib/services/releases/import-bundle';
@@ -129,8 +130,16 @@ describe('a release', () => {
     const foreign = { role: 'author' as const, body: { ...body, runIds: [crypto.randomUUID()] } };
     expect((await post(createRelease, foreign)).status).toBe(404);
     expect((await post(createRelease, { role: 'student', body })).status).toBe(403);
-    release = await view(await post(createRelease, { role: 'author', body }));
+    const made = await view(await post(createRelease, { role: 'author', body }));
+    release = made;
     expect(release.key).toBe('R-1');
+    const { result, recipe } = run;
+    const counted = result?.counted.length;
+    expect(made.runs[0]).toMatchObject({
+      ranges: expect.stringMatching(/^planets of .*MJ at .*AU$/),
+      prior: describePrior(recipe.prior, result?.quantity ?? 'host_fraction'),
+      detections: counted === 1 ? '1 detection' : `${counted || 'zero'} detections`,
+    });
     await expect(findPublicRelease(release.code)).rejects.toThrow('No such release');
   });
 

@@ -21,29 +21,30 @@ import {
 } from '@/models';
 import { needsTwoPeople } from '../settings';
 import { together } from '../together';
+import { GROUND, type Ground, JOIN_GROUND, restsOn } from './rests-on';
 
 const RUNS = `
   select q.release_id as "releaseId", r.id, r.number, 'A-' || a.number as "analysisKey",
     a.name as "analysisName", x.statement->>'sentence' as sentence,
     (x.answer->>'limit')::float8 as "limit",
-    (r.recipe->>'credibleLevel')::float8 as "credibleLevel", x.quantity,
+    (r.recipe->>'credibleLevel')::float8 as "credibleLevel", ${GROUND},
     f.frozen_by_name as "frozenBy", f.frozen_at as "frozenAt",
     r.inputs_digest as "inputsDigest", r.result_digest as "resultDigest"
   from release_run q join run r on r.id = q.run_id join analysis a on a.id = r.analysis_id
-    join frozen_run f on f.run_id = r.id
-    left join lateral jsonb_to_record(r.result) as x(
-      quantity text, answer jsonb, statement jsonb) on true
+    join frozen_run f on f.run_id = r.id ${JOIN_GROUND}
   where q.release_id = any($1::uuid[]) order by q.position`;
 
 /** The runs of releases, in their order. */
 export async function runsOfReleases(ids: string[]): Promise<Map<string, ReleaseRunView[]>> {
-  const rows = await database().query<{ releaseId: string; frozenAt: Date }>(RUNS, {
+  const rows = await database().query<Ground & { releaseId: string; frozenAt: Date }>(RUNS, {
     bind: [ids],
     type: QueryTypes.SELECT,
   });
   const runs = new Map<string, ReleaseRunView[]>(ids.map((id) => [id, []]));
   for (const { releaseId, frozenAt, ...row } of rows) {
-    runs.get(releaseId)?.push(releaseRunSchema.parse({ ...row, frozenAt: frozenAt.toISOString() }));
+    runs
+      .get(releaseId)
+      ?.push(releaseRunSchema.parse({ ...row, ...restsOn(row), frozenAt: frozenAt.toISOString() }));
   }
   return runs;
 }
