@@ -5,7 +5,7 @@ import { formatPercent, formatPlain, formatRange } from '@/lib/quantities/displa
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { tableOfField } from './data-table';
-import { DetectionMarks, type MapDetection } from './detection-marks';
+import { DetectionMarks, type MapDetection, placeNames } from './detection-marks';
 import type { Box, MapData } from './map-contours';
 import { MapAxes, mapFrame } from './map-frame';
 import { ContourNumbers, contourLabels, contoursOf, MapBands } from './map-layers';
@@ -44,14 +44,23 @@ export const CompletenessMapChart = memo(function CompletenessMapChart(
     [map, frame],
   );
   const box = range ? rangePx(range, frame) : undefined;
-  const marks = box && onRangeChange ? handleBoxes(box) : [];
+  const isMovable = onRangeChange !== undefined;
+  const handles = box && isMovable ? handleBoxes(box) : [];
   const contours = useMemo(() => contoursOf(map, frame), [map, frame]);
   const numbers = useMemo(() => {
     const dots = detections.map(({ semiMajorAxisAu, massMjup }) =>
       around(frame.x(semiMajorAxisAu), frame.y(massMjup), 9),
     );
-    return contourLabels(contours, range ? rangePx(range, frame) : frame, dots);
-  }, [contours, frame, range, detections]);
+    const inside = range && rangePx(range, frame);
+    // A number has the whole of its contour to move along, a name only the places around its dot.
+    const names = placeNames(
+      detections,
+      frame,
+      inside && isMovable ? handleBoxes(inside) : [],
+      inside,
+    );
+    return contourLabels(contours, inside ?? frame, [...dots, ...names.map((place) => place.box)]);
+  }, [contours, frame, range, detections, isMovable]);
   const sentence = useMemo(
     () => mapSentence(map, subject, range, detections),
     [map, subject, range, detections],
@@ -121,12 +130,7 @@ export const CompletenessMapChart = memo(function CompletenessMapChart(
         )}
       </g>
       <ContourNumbers places={numbers} />
-      <DetectionMarks
-        detections={detections}
-        frame={frame}
-        taken={[...numbers.map((place) => place.box), ...marks]}
-        range={box}
-      />
+      <DetectionMarks detections={detections} frame={frame} taken={handles} range={box} />
       {at && <CursorRing x={places.columns[at.column]} y={places.rows[at.row]} />}
       <MapAxes map={map} frame={frame} />
     </ChartFigure>

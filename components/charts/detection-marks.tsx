@@ -27,13 +27,11 @@ export function DetectionMarks({
   taken: Box[];
   range?: Box;
 }) {
-  const occupied = [...taken];
-  const edges = range ? edgesOf(range) : [];
-  return detections.map((detection) => {
+  const places = placeNames(detections, frame, taken, range);
+  return detections.map((detection, index) => {
     const x = frame.x(detection.semiMajorAxisAu);
     const y = frame.y(detection.massMjup);
-    const place = freePlace(detection.name, x, y, frame, occupied, edges);
-    occupied.push(place.box, { left: x - 8, right: x + 8, top: y - 8, bottom: y + 8 });
+    const place = places[index];
     return (
       <g key={detection.name} className={detection.isAside ? 'detection is-aside' : 'detection'}>
         {detection.semiMajorAxisErrorAu !== undefined && (
@@ -62,12 +60,30 @@ export function DetectionMarks({
             x2={x}
           />
         )}
+        {detection.isAside && <circle className="ring-edge" cx={x} cy={y} r="5" />}
         <circle cx={x} cy={y} r="5" />
         <text className="halo" x={place.x} y={place.y} textAnchor={place.anchor}>
           {detection.name}
         </text>
       </g>
     );
+  });
+}
+
+/** Where each name stands, one after another, clear of what is taken wherever that is possible. */
+export function placeNames(
+  detections: MapDetection[],
+  frame: MapFrame,
+  taken: Box[],
+  range: Box | undefined,
+) {
+  const occupied = [...taken];
+  const edges = range ? edgesOf(range) : [];
+  return detections.map(({ name, semiMajorAxisAu, massMjup }) => {
+    const [x, y] = [frame.x(semiMajorAxisAu), frame.y(massMjup)];
+    const place = freePlace(name, x, y, frame, occupied, edges);
+    occupied.push(place.box, { left: x - 8, right: x + 8, top: y - 8, bottom: y + 8 });
+    return place;
   });
 }
 
