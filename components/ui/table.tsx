@@ -9,13 +9,13 @@ interface TableProps {
 }
 
 /**
- * Semantic table without stripes; scrolls sideways inside itself, never the page. It is positioned,
- * so that words for screen readers alone, which are absolute, stay inside it too.
+ * Semantic table without stripes; scrolls sideways inside itself, never the page, and shades the edge
+ * at which it is cut off. It is positioned, so that words for screen readers alone, which are absolute, stay inside it too.
  */
 export function Table({ caption, isCaptionShown = false, children, className = '' }: TableProps) {
   return (
     // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
-    <div className="relative min-w-0 overflow-x-auto focus-visible:outline-offset-0" tabIndex={0}>
+    <div className="scrolls-sideways relative min-w-0 focus-visible:outline-offset-0" tabIndex={0}>
       <table className={`w-full border-collapse text-note ${className}`}>
         <caption className={isCaptionShown ? 'pb-2 text-left text-ink3 text-note' : 'sr-only'}>
           {caption}

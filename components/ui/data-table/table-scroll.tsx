@@ -25,7 +25,7 @@ export function TableScroll({
       ref={scroller}
       // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard
       tabIndex={0}
-      className={`relative min-w-0 overflow-x-auto focus-visible:outline-offset-0 ${tall}`}
+      className={`scrolls-sideways relative min-w-0 focus-visible:outline-offset-0 ${tall}`}
     >
       <table className="w-full border-collapse text-note" aria-rowcount={rowCount}>
         <caption className="sr-only">{caption}</caption>
