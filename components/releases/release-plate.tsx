@@ -15,9 +15,14 @@ export const curveOf = ({ curve }: RateAnswer): RateCurve => ({
   cumulative: Float64Array.from(curve.cumulative),
 });
 
+/** Conditions that stand with the statement; all others below it. */
+const MAIN = ['Prior', 'Population', 'Detections', 'Exposure', 'Cooling'];
+
 /** The limit as a sentence, its posterior, and every condition as the run stated it. */
 export function ReleasePlate({ run }: { run: ShownRun }) {
   const { answer, zero, quantity, credibleLevel, counted, candidates, statement } = run.result;
+  const conditions = statement.conditions.map(conditionRow);
+  const isMain = ({ name }: { name: string }) => MAIN.includes(name);
   const isFraction = quantity === 'host_fraction';
   return (
     <Plate>
@@ -45,6 +50,9 @@ export function ReleasePlate({ run }: { run: ShownRun }) {
             </b>
             {!isFraction && ' per 100 stars'}
           </p>
+          <div className="mt-5">
+            <Conditions rows={conditions.filter(isMain)} />
+          </div>
         </div>
         <div className="min-w-0">
           <PosteriorChart
@@ -72,7 +80,7 @@ export function ReleasePlate({ run }: { run: ShownRun }) {
         </div>
       </div>
       <div className="mt-4 border-rule border-t pt-3.5">
-        <Conditions rows={statement.conditions.map(conditionRow)} />
+        <Conditions rows={conditions.filter((row) => !isMain(row))} isInPairs />
       </div>
     </Plate>
   );

@@ -64,10 +64,18 @@ export function conditionRow(condition: string): ConditionRow {
   return { name: condition.slice(0, at), value: <FormulaWords text={condition.slice(at + 2)} /> };
 }
 
-/** What the number rests on: name and value, line by line. */
-export function Conditions({ rows }: { rows: ConditionRow[] }) {
+/** What the number rests on: name and value, line by line; on a wide screen two a line if asked. */
+export function Conditions({
+  rows,
+  isInPairs = false,
+}: {
+  rows: ConditionRow[];
+  isInPairs?: boolean;
+}) {
   return (
-    <dl className="grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-[3px] text-ink2 text-note">
+    <dl
+      className={`grid grid-cols-[auto_1fr] gap-x-3.5 gap-y-[3px] text-ink2 text-note ${isInPairs ? 'lg:grid-cols-[auto_1fr_auto_1fr]' : ''}`}
+    >
       {rows.map((row) => (
         <div key={row.name} className="contents">
           <dt className={`text-ink3 ${row.help === undefined ? '' : 'whitespace-nowrap'}`}>
