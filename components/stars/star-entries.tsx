@@ -29,7 +29,9 @@ export function StarEntries({ collaboration, star, onChanged }: StarEntriesProps
             <HeadCell>name there</HeadCell>
             <HeadCell>type</HeadCell>
             <HeadCell>position, °</HeadCell>
-            <HeadCell isNumeric>host mass</HeadCell>
+            <HeadCell isNumeric className="min-w-24 whitespace-normal">
+              host mass, solar masses
+            </HeadCell>
             <HeadCell isNumeric>epochs</HeadCell>
             <HeadCell isNumeric>detection probability</HeadCell>
             <HeadCell>found by</HeadCell>
@@ -45,7 +47,7 @@ export function StarEntries({ collaboration, star, onChanged }: StarEntriesProps
                   </Link>
                 </SeriesKey>
               </Cell>
-              <Cell>
+              <Cell className="whitespace-nowrap">
                 {entry.name}
                 {entry.leftOutReason !== null && (
                   <span className="block text-[12px] text-warn">

@@ -5,7 +5,7 @@ import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import type { AgeValue, DistanceValue, StarView } from '@/lib/schemas/stars';
 import { probabilityColumn } from './probability-column';
-import { ageWords, conflictWords, distanceWords } from './star-words';
+import { ageNumbers, conflictWords, distanceNumbers } from './star-words';
 
 function Source({ words, conflict }: { words: string; conflict: string | null }) {
   return (
@@ -35,6 +35,7 @@ const nameColumn = (collaboration: string): DataColumn<StarView> => ({
   head: 'star',
   name: 'star',
   isRowHead: true,
+  className: 'whitespace-nowrap',
   value: ({ name }) => name,
   also: [
     { name: 'other names', value: ({ otherNames }) => otherNames.join('; ') || null },
@@ -79,7 +80,7 @@ const valueColumns: DataColumn<StarView>[] = [
   },
   {
     id: 'age',
-    head: 'age',
+    head: 'age, Myr',
     name: 'age, Myr',
     isNumeric: true,
     value: ({ age }) => age && ageMyrOf(age.value),
@@ -93,14 +94,14 @@ const valueColumns: DataColumn<StarView>[] = [
         '–'
       ) : (
         <>
-          {ageWords(star.age.value)}
+          {ageNumbers(star.age.value)}
           <Source words={star.age.source.words} conflict={openConflict(star, 'age')} />
         </>
       ),
   },
   {
     id: 'distance',
-    head: 'distance',
+    head: 'distance, pc',
     name: 'distance, pc',
     isNumeric: true,
     className: 'max-md:hidden',
@@ -117,7 +118,7 @@ const valueColumns: DataColumn<StarView>[] = [
         '–'
       ) : (
         <>
-          {distanceWords(star.distance.value)}
+          {distanceNumbers(star.distance.value)}
           <Source words={star.distance.source.words} conflict={openConflict(star, 'distance')} />
         </>
       ),

@@ -1,32 +1,42 @@
-import { formatPlain } from '@/lib/quantities/display';
+import { formatAsymmetric, formatPlain } from '@/lib/quantities/display';
 import type { AgeValue, DistanceValue, MatchEvidence, StarView } from '@/lib/schemas/stars';
 
-/** "45 (+7, −5) Myr", "10–100 Myr". */
-export function ageWords(age: AgeValue): string {
+/** A number and its errors do not part at the end of a line. */
+const unbroken = (text: string) => text.replaceAll(' ', '\u00a0');
+
+/** "45 +7 −5", "10–100"; "45 ± ?" where nobody gives an error. */
+export function ageNumbers(age: AgeValue): string {
   const { ageMyr, ageLowerMyr, ageUpperMyr, ageMinMyr, ageMaxMyr } = age;
-  const plain = (value: number) => formatPlain(value, 3);
-  if (ageMyr === null) return `${plain(ageMinMyr ?? 0)}–${plain(ageMaxMyr ?? 0)}\u00a0Myr`;
-  if (ageLowerMyr === null || ageUpperMyr === null) return `${plain(ageMyr)}\u00a0Myr`;
-  const [above, below] = [plain(ageUpperMyr - ageMyr), plain(ageMyr - ageLowerMyr)];
-  const error = above === below ? `\u00a0±\u00a0${above}` : ` (+${above}, −${below})`;
-  return `${plain(ageMyr)}${error}\u00a0Myr`;
+  const bounds =
+    ageMinMyr === null || ageMaxMyr === null
+      ? null
+      : `${formatPlain(ageMinMyr, 3)}–${formatPlain(ageMaxMyr, 3)}`;
+  if (ageMyr === null) return bounds ?? '?';
+  if (ageLowerMyr !== null && ageUpperMyr !== null) {
+    return unbroken(formatAsymmetric(ageMyr, ageMyr - ageLowerMyr, ageUpperMyr - ageMyr));
+  }
+  const middle = formatPlain(ageMyr, 3);
+  return unbroken(bounds === null ? `${middle} ± ?` : `${middle} (${bounds})`);
 }
 
-/** "25.3 ± 0.2 pc", from a parallax where no distance is given. */
-export function distanceWords(given: DistanceValue): string {
+/** "45 +7 −5 Myr". */
+export const ageWords = (age: AgeValue) => `${ageNumbers(age)}\u00a0Myr`;
+
+/** "25.3 ± 0.2", from a parallax where no distance is given. */
+export function distanceNumbers(given: DistanceValue): string {
   const { distancePc, distanceErrorPc, parallaxMas, parallaxErrorMas } = given;
-  if (distancePc !== null) {
-    const error = distanceErrorPc === null ? '' : `\u00a0±\u00a0${formatPlain(distanceErrorPc, 2)}`;
-    return `${formatPlain(distancePc)}${error}\u00a0pc`;
-  }
-  const parallax = parallaxMas ?? 0;
-  const distance = 1000 / parallax;
-  const error =
-    parallaxErrorMas === null
-      ? ''
-      : `\u00a0±\u00a0${formatPlain((distance * parallaxErrorMas) / parallax, 2)}`;
-  return `${formatPlain(distance)}${error}\u00a0pc`;
+  if (distancePc !== null) return withError(distancePc, distanceErrorPc);
+  if (parallaxMas === null) return '?';
+  const distance = 1000 / parallaxMas;
+  const share = parallaxErrorMas === null ? null : parallaxErrorMas / parallaxMas;
+  return withError(distance, share === null ? null : distance * share);
 }
+
+/** "25.3 ± 0.2 pc". */
+export const distanceWords = (given: DistanceValue) => `${distanceNumbers(given)}\u00a0pc`;
+
+const withError = (value: number, error: number | null) =>
+  error === null ? formatPlain(value) : unbroken(formatAsymmetric(value, error, error));
 
 /** What speaks for two entries being one star. */
 export function evidenceWords(evidence: MatchEvidence): string {

@@ -3,15 +3,14 @@ import { Link } from '@/components/ui/link';
 import { JupiterMass } from '@/components/ui/notation';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { formatAsymmetric } from '@/lib/quantities/display';
 import type { CompanionView } from '@/lib/schemas/surveys';
-import { formatErrorPart, formatMeasured } from './measured';
+import { formatMeasured } from './measured';
 
 function withErrors(value: number | null, lower: number | null, upper: number | null): string {
   if (value === null) return '–';
-  const text = formatMeasured(value, null);
-  if (lower === null || upper === null) return text;
-  if (lower === upper) return `${text} ± ${formatErrorPart(lower)}`;
-  return `${text} +${formatErrorPart(upper)} −${formatErrorPart(lower)}`;
+  if (lower === null || upper === null) return formatMeasured(value, null);
+  return formatAsymmetric(value, lower, upper);
 }
 
 /** Companions and candidates; only confirmed ones can be detections. */

@@ -36,13 +36,15 @@ function factsOf(target: TargetView): string {
   const parts: string[] = [];
   if (target.spectralType) parts.push(target.spectralType);
   if (target.distancePc !== null)
-    parts.push(`${formatMeasured(target.distancePc, target.distanceErrorPc)} pc`);
+    parts.push(
+      target.distanceErrorPc === null
+        ? `${formatMeasured(target.distancePc, null)} pc`
+        : `${formatMeasured(target.distancePc, target.distanceErrorPc)} ± ${formatErrorPart(target.distanceErrorPc)} pc`,
+    );
   if (target.ageMyr !== null) {
-    const error =
-      target.ageUpperMyr === null
-        ? ''
-        : ` ± ${formatErrorPart(target.ageUpperMyr - target.ageMyr)}`;
-    parts.push(`${formatMeasured(target.ageMyr, null)}${error} Myr`);
+    const error = target.ageUpperMyr === null ? null : target.ageUpperMyr - target.ageMyr;
+    const part = error === null ? '?' : formatErrorPart(error);
+    parts.push(`${formatMeasured(target.ageMyr, error)} ± ${part} Myr`);
   }
   parts.push(target.movingGroup ?? 'field');
   return parts.join(', ');

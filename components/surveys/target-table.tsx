@@ -108,7 +108,7 @@ const valueColumns: DataColumn<TargetView>[] = [
       const error = half(ageUpperMyr, ageMyr);
       return (
         <>
-          {ageMyr === null ? '–' : formatMeasured(ageMyr, null)}
+          {ageMyr === null ? '–' : formatMeasured(ageMyr, error)}
           {ageMyr !== null && (
             <ErrorTerm>{error === null ? '?' : formatErrorPart(error)}</ErrorTerm>
           )}
@@ -155,7 +155,7 @@ const valueColumns: DataColumn<TargetView>[] = [
     className: wide,
     value: ({ alsoIn }) => alsoIn.map(({ name }) => name).join('; ') || null,
     cell: ({ alsoIn }) => (
-      <span className="flex gap-x-2">
+      <span className="flex flex-wrap gap-x-2">
         {alsoIn.length === 0 && '–'}
         {alsoIn.map((survey) => (
           <span
@@ -173,7 +173,6 @@ const valueColumns: DataColumn<TargetView>[] = [
     id: 'check',
     head: 'check',
     name: 'check',
-    className: 'whitespace-nowrap',
     value: (target) => checkWords(target) || null,
     cell: (target) => <MapMark target={target} />,
   },

@@ -144,14 +144,14 @@ export function formatAsymmetric(value: number, lower: number, upper: number, un
   const suffix = unit === '' ? '' : `${THIN_SPACE}${unit}`;
   if (lower === 0 && upper === 0) return `${formatPlain(value)}${suffix}`;
   const smallest = Math.min(lower || upper, upper || lower);
-  const decimals = decimalsFor(smallest);
+  const decimals = errorDecimals(smallest);
   const fixed = (x: number) => withMinus(x.toFixed(decimals));
   if (fixed(lower) === fixed(upper)) return `${fixed(value)} ± ${fixed(upper)}${suffix}`;
   return `${fixed(value)} +${fixed(upper)} ${MINUS}${fixed(lower)}${suffix}`;
 }
 
-/** Two figures of the error, and no more decimals than a whole number needs. */
-function decimalsFor(error: number): number {
+/** Decimals of a value and its error > 0: two figures of the error, no more than a whole number needs. */
+export function errorDecimals(error: number): number {
   const twoFigures = Math.max(0, 1 - Math.floor(Math.log10(error)));
   const text = error.toFixed(Math.min(twoFigures, 20));
   return text.includes('.') ? text.replace(/0+$/, '').split('.')[1].length : 0;
