@@ -37,7 +37,7 @@ export function SortHead({
         title={`Order by ${name}`}
         onClick={() => onSort()}
       >
-        {children}
+        <span className={isNumeric ? 'text-right' : 'text-left'}>{children}</span>
         <span className={`w-3 ${direction ? '' : 'opacity-0'}`}>
           <Icon name="down" size={12} className={direction === 'asc' ? 'rotate-180' : ''} />
         </span>
