@@ -53,8 +53,9 @@ export function CombinationReport({ preview }: { preview: CombinationPreview }) 
           hasAxisNumbers
         />
         <p className="text-chart text-ink3">
-          Each survey adds to those before it. Where a star is asked for the same position, the
-          deepest map stands for it here, which is never more than the run itself finds.
+          In the table each survey adds to those before it; the drawing lays the same parts on each
+          other, the largest at the bottom. Where a star is asked for the same position, the deepest
+          map stands for it here, which is never more than the run itself finds.
         </p>
       </div>
     </>

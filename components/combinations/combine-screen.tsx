@@ -108,6 +108,7 @@ export function CombineScreen({
             <OrderChoice surveys={surveys} chosen={draft.surveyIds} onChange={takeSurveys} />
             <SelectField
               label="A star in several surveys"
+              hint={draft.rule === 'default' ? `By default ${ruleNames.default}` : undefined}
               value={draft.rule}
               onChange={(event) => {
                 const rule = rules.find((one) => one === event.target.value) ?? draft.rule;
@@ -115,7 +116,7 @@ export function CombineScreen({
               }}
               options={rules.map((rule) => ({
                 value: rule,
-                label: ruleNames[rule],
+                label: rule === 'default' ? 'same position, else the deepest map' : ruleNames[rule],
               }))}
             />
             <SelectField
