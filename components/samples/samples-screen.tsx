@@ -5,11 +5,13 @@ import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { createSample, useSamplePreview, useSamples } from '@/components/hooks/use-samples';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
+import { StarTabs } from '@/components/stars/star-tabs';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
 import { TextAction } from '@/components/ui/text-action';
 import type { SamplePreview, SampleView } from '@/lib/schemas/samples';
+import type { StarList } from '@/lib/schemas/stars';
 import type { SurveyView } from '@/lib/schemas/surveys';
 import { SampleCounts } from './sample-counts';
 import { draftOf, EMPTY_DRAFT, readDraft, type SampleDraft } from './sample-draft';
@@ -23,13 +25,15 @@ interface SamplesScreenProps {
   collaboration: string;
   surveys: SurveyView[];
   initial: SampleView[];
+  /** Of the whole collaboration. */
+  counts: Pick<StarList['counts'], 'stars' | 'undecided'>;
   /** What a selection without any condition holds. */
   firstPreview?: SamplePreview;
 }
 
 /** Saved selections of stars, and one that is being made, with what it holds at each change. */
 export function SamplesScreen(props: SamplesScreenProps) {
-  const { collaboration, surveys, initial, firstPreview } = props;
+  const { collaboration, surveys, initial, counts, firstPreview } = props;
   const { data: samples = initial, mutate } = useSamples(collaboration, initial);
   const [draft, setDraft] = useState<SampleDraft>(EMPTY_DRAFT);
   const schema = useSchema(loadSchema);
@@ -63,8 +67,13 @@ export function SamplesScreen(props: SamplesScreenProps) {
     <>
       <PageTitle
         title="Samples"
-        crumbs={[{ href: `/${collaboration}/surveys`, label: 'Surveys' }, { label: 'Samples' }]}
         context="Selections of stars that analyses rest on. A star chosen because a companion was known is left out unless a sample keeps it."
+      />
+      <StarTabs
+        collaboration={collaboration}
+        current="samples"
+        stars={counts.stars}
+        undecided={counts.undecided}
       />
       <div className="grid gap-x-14 gap-y-8 pb-10 xl:grid-cols-[420px_1fr]">
         <section className="min-w-0">

@@ -80,10 +80,15 @@ function Conflicts(props: AgesScreenProps & { index: 0 | 1 }) {
 /** Where surveys disagree, and the numbered tables of what was adopted. */
 export function AgesScreen(props: AgesScreenProps) {
   const day = useDay();
-  const { collaboration, tables } = props;
+  const { collaboration, ages, tables } = props;
   return (
     <>
-      <StarTabs collaboration={collaboration} current="ages" />
+      <StarTabs
+        collaboration={collaboration}
+        current="ages"
+        stars={ages.counts.stars}
+        undecided={ages.counts.undecided}
+      />
       <p className="mb-6 max-w-[72ch] text-ink2">
         A star in several surveys has the age and distance of the survey listed first, until one is
         adopted. Each adoption makes a new numbered table that never changes; a run names the table

@@ -65,7 +65,12 @@ export function OverlapBoard({ collaboration, initial }: OverlapBoardProps) {
   );
   return (
     <>
-      <StarTabs collaboration={collaboration} current="overlaps" undecided={open.length} />
+      <StarTabs
+        collaboration={collaboration}
+        current="overlaps"
+        stars={stars}
+        undecided={open.length}
+      />
       <p className="mb-6 max-w-[72ch] text-ink2">
         {entries} entries, {stars} stars. {automatic.identifier} entries were joined to a known star
         by Gaia number and {automatic.name} by a name when their tables were stored; each can be

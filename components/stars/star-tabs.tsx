@@ -3,8 +3,9 @@ import { LinkTabs } from '@/components/ui/link-tabs';
 interface StarTabsProps {
   collaboration: string;
   current: 'stars' | 'overlaps' | 'ages' | 'samples';
-  stars?: number;
-  undecided?: number;
+  /** Of the whole collaboration: the same on each of the pages. */
+  stars: number;
+  undecided: number;
 }
 
 /** The parts of the sky: stars, pairs to decide, adopted values, saved selections. */

@@ -5,6 +5,7 @@ import { SamplesScreen } from '@/components/samples/samples-screen';
 import { sampleDefinitionSchema } from '@/lib/schemas/samples';
 import { previewSample } from '@/lib/services/sample-preview';
 import { listSamples } from '@/lib/services/samples';
+import { listStars } from '@/lib/services/stars';
 import { listSurveys } from '@/lib/services/surveys';
 
 export const metadata: Metadata = { title: 'Samples' };
@@ -16,9 +17,10 @@ export default async function SamplesPage({
 }) {
   const actor = await currentActor((await params).collaboration);
   const { definition } = readDraft(EMPTY_DRAFT, sampleDefinitionSchema);
-  const [{ surveys }, { samples }, preview] = await Promise.all([
+  const [{ surveys }, { samples }, { counts }, preview] = await Promise.all([
     listSurveys(actor),
     listSamples(actor),
+    listStars(actor, { limit: 1, offset: 0 }),
     definition && previewSample(actor, { definition }),
   ]);
   return (
@@ -26,6 +28,7 @@ export default async function SamplesPage({
       collaboration={actor.collaboration}
       surveys={surveys.filter(({ isArchived }) => !isArchived)}
       initial={samples}
+      counts={counts}
       firstPreview={preview}
     />
   );
