@@ -5,6 +5,7 @@ import { formatLimit, formatPlain, type RateQuantity, rateUnit } from '@/lib/qua
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
+import { spreadNames } from './end-names';
 import { spokenLimit } from './limit-bands';
 import { linePath } from './paths';
 import { frameWithin, scaleLinear } from './scales';
@@ -157,19 +158,6 @@ export function AgeShiftChart(props: AgeShiftChartProps) {
 const shiftWords = (shift: number) => `${shift > 0 ? '+' : ''}${formatPlain(shift)} σ`;
 
 const lastOf = (limit: (number | null)[]) => [...limit].reverse().find((one) => one !== null);
-
-const LINE = 16;
-
-/** Heights of the names at the ends of their lines, moved apart where lines end close together. */
-function spreadNames(heights: number[], frame: { top: number; bottom: number }): number[] {
-  const order = heights.map((_, i) => i).sort((a, b) => heights[a] - heights[b]);
-  const placed = [...heights];
-  for (const [rank, i] of order.entries()) {
-    const above = rank === 0 ? frame.top - LINE : placed[order[rank - 1]];
-    placed[i] = Math.max(heights[i], above + LINE);
-  }
-  return placed;
-}
 
 /** What the drawing shows, in one sentence. */
 export function ageShiftSentence({ ageShifts, lines, quantity }: AgeShiftChartProps): string {

@@ -6,20 +6,20 @@ import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
-import type { DataTable } from './data-table';
+import {
+  type ContrastDomain,
+  contrastColumns,
+  contrastDomain,
+  magAt,
+  type NamedContrastCurve,
+  SAMPLES,
+  sampleSeparations,
+} from './contrast-curves';
 import { bandPath, linePath, valueAt } from './paths';
 import { CursorMarks } from './reading-marks';
 import { scaleLinear, scaleLog } from './scales';
 import { linearTicks, logTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
-
-export interface NamedContrastCurve {
-  name: string;
-  /** Increasing [arcsec]. */
-  separationArcsec: Float64Array;
-  /** Fainter than the star by so many magnitudes, shape [separation]. */
-  contrastMag: Float64Array;
-}
 
 export interface ContrastChartProps {
   curves: NamedContrastCurve[];
@@ -31,7 +31,6 @@ export interface ContrastChartProps {
 }
 
 const margin = { left: 46, right: 20, top: 12, bottom: 46 };
-const samples = 60;
 
 /** All curves thin, the median with its 68 % band, the selected one in ink; contrast grows downwards. */
 export function ContrastChart({ curves, selected, nSigma, height }: ContrastChartProps) {
@@ -141,18 +140,13 @@ export function ContrastChart({ curves, selected, nSigma, height }: ContrastChar
   );
 }
 
-interface Domain {
-  separation: [number, number];
-  contrast: [number, number];
-}
-
 const ThinCurves = memo(function ThinCurves({
   curves,
   domain,
   frame,
 }: {
   curves: NamedContrastCurve[];
-  domain: Domain;
+  domain: ContrastDomain;
   frame: { left: number; right: number; top: number; bottom: number };
 }) {
   const x = scaleLog(domain.separation, [frame.left, frame.right]);
@@ -166,19 +160,6 @@ const ThinCurves = memo(function ThinCurves({
   ));
 });
 
-function contrastDomain(curves: NamedContrastCurve[]): Domain {
-  const separations = curves.flatMap(({ separationArcsec: it }) => [it[0], it[it.length - 1]]);
-  const contrasts = curves
-    .flatMap(({ contrastMag }) => Array.from(contrastMag))
-    .filter(Number.isFinite);
-  if (separations.length === 0) return { separation: [0.1, 10], contrast: [0, 16] };
-  const [low, high] = [Math.min(...separations), Math.max(...separations)];
-  return {
-    separation: [low / 1.08, high * 1.08],
-    contrast: [Math.floor(Math.min(...contrasts)), Math.ceil(Math.max(...contrasts))],
-  };
-}
-
 interface Summary {
   separation: Float64Array;
   median: Float64Array;
@@ -187,11 +168,8 @@ interface Summary {
 }
 
 /** At each separation, over the curves that reach it. */
-function summarise(curves: NamedContrastCurve[], [from, to]: [number, number]): Summary {
-  const separation = Float64Array.from(
-    { length: samples },
-    (_, index) => from * (to / from) ** (index / (samples - 1)),
-  );
+function summarise(curves: NamedContrastCurve[], reach: [number, number]): Summary {
+  const separation = sampleSeparations(reach);
   const at = (share: number) =>
     separation.map((arcsec) => {
       const values = curves
@@ -200,12 +178,6 @@ function summarise(curves: NamedContrastCurve[], [from, to]: [number, number]): 
       return quantile(values, share) ?? Number.NaN;
     });
   return { separation, median: at(0.5), low: at(0.16), high: at(0.84) };
-}
-
-/** NaN beyond the ends of the curve. */
-function magAt({ separationArcsec: it, contrastMag }: NamedContrastCurve, arcsec: number): number {
-  const reaches = it[0] <= arcsec && it[it.length - 1] >= arcsec;
-  return reaches ? valueAt(it, contrastMag, arcsec) : Number.NaN;
 }
 
 function sayContrast(summary: Summary, chosen: NamedContrastCurve | undefined, at: number) {
@@ -222,23 +194,13 @@ function sayContrast(summary: Summary, chosen: NamedContrastCurve | undefined, a
   ];
 }
 
-function contrastColumns(curves: NamedContrastCurve[]): DataTable {
-  return {
-    name: 'contrast-curves',
-    columns: ['target', 'separation_arcsec', 'contrast_mag'],
-    rows: curves.flatMap(({ name, separationArcsec, contrastMag }) =>
-      Array.from(separationArcsec, (arcsec, i) => [name, arcsec, contrastMag[i]]),
-    ),
-  };
-}
-
 function contrastSentence(
   curves: NamedContrastCurve[],
   summary: Summary,
   chosen: NamedContrastCurve | undefined,
 ): string {
   const at = [0.2, 0.5, 1, 2].filter(
-    (arcsec) => arcsec >= summary.separation[0] && arcsec <= summary.separation[samples - 1],
+    (arcsec) => arcsec >= summary.separation[0] && arcsec <= summary.separation[SAMPLES - 1],
   );
   const say = (xs: Float64Array, ys: Float64Array) =>
     at
@@ -255,7 +217,7 @@ function contrastSentence(
 function contrastTable(summary: Summary, chosen: NamedContrastCurve | undefined): ChartTable {
   const mag = (value: number) => (Number.isFinite(value) ? value.toFixed(2) : '–');
   const rows = Array.from({ length: 12 }, (_, index) =>
-    Math.round((index * (samples - 1)) / 11),
+    Math.round((index * (SAMPLES - 1)) / 11),
   ).map((index) => {
     const arcsec = summary.separation[index];
     const cells = [summary.low[index], summary.median[index], summary.high[index]];

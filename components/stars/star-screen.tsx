@@ -2,9 +2,9 @@
 
 import { useMemo } from 'react';
 import { CompletenessMapChart } from '@/components/charts/completeness-map-chart';
-import { ContrastChart } from '@/components/charts/contrast-chart';
 import { MassLimitChart } from '@/components/charts/mass-limit-chart';
 import { RampKey } from '@/components/charts/ramp-key';
+import { type StarCurve, StarCurvesChart } from '@/components/charts/star-curves-chart';
 import { decidePair, useStar } from '@/components/hooks/use-stars';
 import { useMap } from '@/components/hooks/use-surveys';
 import { Link } from '@/components/ui/link';
@@ -145,6 +145,22 @@ function Analyses({ collaboration, star }: { collaboration: string; star: StarPa
   );
 }
 
+/** Its curves by survey and band, and by what else tells two of one survey apart. */
+function namedCurves({ curves, entries }: StarPage): StarCurve[] {
+  const positionOf = new Map(entries.map(({ targetId, survey }) => [targetId, survey.position]));
+  const short = curves.map(({ survey, band }) => `${survey} ${band}`);
+  const isAlone = (name: string) => short.filter((other) => other === name).length === 1;
+  const long = curves.map(({ epoch }, i) =>
+    isAlone(short[i]) || epoch === null ? short[i] : `${short[i]} ${epoch}`,
+  );
+  return curves.map((curve, i) => ({
+    name: long.indexOf(long[i]) === i ? long[i] : `${long[i]}, ${i + 1}`,
+    seriesIndex: positionOf.get(curve.targetId) ?? -1,
+    separationArcsec: Float64Array.from(curve.separationArcsec),
+    contrastMag: Float64Array.from(curve.contrastMag),
+  }));
+}
+
 /** One star: what every survey knows of it, and what rests on it. */
 export function StarScreen({
   collaboration,
@@ -155,15 +171,7 @@ export function StarScreen({
 }) {
   const { data: star = initial, mutate } = useStar(collaboration, initial.id, initial);
   const replace = (next: StarPage) => void mutate(next, { revalidate: false });
-  const curves = useMemo(
-    () =>
-      star.curves.map((curve) => ({
-        name: [curve.survey, curve.band, curve.epoch].filter(Boolean).join(' '),
-        separationArcsec: Float64Array.from(curve.separationArcsec),
-        contrastMag: Float64Array.from(curve.contrastMag),
-      })),
-    [star.curves],
-  );
+  const curves = useMemo(() => namedCurves(star), [star]);
   const sigmas = new Set(star.curves.map(({ nSigma }) => nSigma));
   const names = [star.gaiaDr3Id && `Gaia DR3 ${star.gaiaDr3Id}`, ...star.otherNames];
   return (
@@ -198,11 +206,13 @@ export function StarScreen({
         <section className="mb-9 max-w-[760px]">
           <SectionOpener
             title="Contrast curves"
-            context={curves.map(({ name }) => name).join(', ')}
+            help="contrast-curve"
+            context={star.curves
+              .map(({ survey, band, epoch }) => [survey, band, epoch].filter(Boolean).join(' '))
+              .join(', ')}
           />
-          <ContrastChart
+          <StarCurvesChart
             curves={curves}
-            selected={curves.length === 1 ? curves[0].name : undefined}
             nSigma={sigmas.size === 1 ? [...sigmas][0] : undefined}
           />
         </section>
