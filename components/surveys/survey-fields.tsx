@@ -5,13 +5,7 @@ import { TextField } from '@/components/ui/text-field';
 
 /** What a survey is called and when it observed; how its maps are made is asked elsewhere. */
 export const loadSurveyFacts = async () =>
-  (await import('@/lib/schemas/surveys')).createSurveySchema.pick({
-    name: true,
-    band: true,
-    description: true,
-    observedFrom: true,
-    observedTo: true,
-  });
+  (await import('@/lib/schemas/surveys')).surveyFactsSchema;
 
 type SurveyFacts = Awaited<ReturnType<typeof loadSurveyFacts>>;
 type SurveyFactsForm = ReturnType<typeof useSchemaForm<SurveyFacts>>;

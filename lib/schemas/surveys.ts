@@ -9,26 +9,46 @@ export type { MapSettings } from './sensitivity';
 
 const yearSchema = z.number().int().min(1950).max(2100);
 
-export const createSurveySchema = z.strictObject({
+interface Years {
+  observedFrom?: number | null | undefined;
+  observedTo?: number | null | undefined;
+}
+/** Whether the years are in order, as far as both are known. */
+export const areYearsInOrder = ({ observedFrom, observedTo }: Years) =>
+  observedFrom == null || observedTo == null || observedFrom <= observedTo;
+export const LAST_YEAR = 'a last year that is not before the first';
+const yearsFault = { path: ['observedTo'], error: LAST_YEAR };
+
+const factFields = {
   name: lineSchema(60),
-  slug: slugSchema.optional(),
   band: lineSchema(12),
   description: z.string().max(2000).default(''),
   observedFrom: yearSchema.nullable().default(null),
   observedTo: yearSchema.nullable().default(null),
-  leadId: idSchema.nullable().optional(),
-  mapSettings: mapSettingsSchema.prefault({}),
-});
-export const updateSurveySchema = z.strictObject({
-  name: lineSchema(60).optional(),
-  band: lineSchema(12).optional(),
-  description: z.string().max(2000).optional(),
-  observedFrom: yearSchema.nullable().optional(),
-  observedTo: yearSchema.nullable().optional(),
-  leadId: idSchema.nullable().optional(),
-  isArchived: z.boolean().optional(),
-  mapSettings: mapSettingsSchema.optional(),
-});
+};
+/** What a survey is called and when it observed. */
+export const surveyFactsSchema = z.strictObject(factFields).refine(areYearsInOrder, yearsFault);
+
+export const createSurveySchema = z
+  .strictObject({
+    ...factFields,
+    slug: slugSchema.optional(),
+    leadId: idSchema.nullable().optional(),
+    mapSettings: mapSettingsSchema.prefault({}),
+  })
+  .refine(areYearsInOrder, yearsFault);
+export const updateSurveySchema = z
+  .strictObject({
+    name: lineSchema(60).optional(),
+    band: lineSchema(12).optional(),
+    description: z.string().max(2000).optional(),
+    observedFrom: yearSchema.nullable().optional(),
+    observedTo: yearSchema.nullable().optional(),
+    leadId: idSchema.nullable().optional(),
+    isArchived: z.boolean().optional(),
+    mapSettings: mapSettingsSchema.optional(),
+  })
+  .refine(areYearsInOrder, yearsFault);
 
 export const surveySchema = z.object({
   id: idSchema,

@@ -2,14 +2,16 @@ import { QueryTypes, UniqueConstraintError } from 'sequelize';
 import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
-import { Conflict, NotFound } from '@/lib/errors';
+import { Conflict, InputError, NotFound } from '@/lib/errors';
 import { mapSettingsSchema } from '@/lib/schemas/sensitivity';
-import type {
-  createSurveySchema,
-  MapSettings,
-  SurveyList,
-  SurveyView,
-  updateSurveySchema,
+import {
+  areYearsInOrder,
+  type createSurveySchema,
+  LAST_YEAR,
+  type MapSettings,
+  type SurveyList,
+  type SurveyView,
+  type updateSurveySchema,
 } from '@/lib/schemas/surveys';
 import { database, inTransaction, SurveyRow } from '@/models';
 import { recordAudit } from './audit';
@@ -239,6 +241,17 @@ export async function createSurvey(
   return getSurvey(actor, slug);
 }
 
+/** One year that is given is held against the other that is stored. */
+function refuseYears(years: Pick<SurveyRow, 'observedFrom' | 'observedTo'>): void {
+  if (areYearsInOrder(years)) return;
+  throw new InputError({
+    code: 'inconsistent',
+    item: 'observedTo',
+    found: `${years.observedFrom} to ${years.observedTo}`,
+    expected: LAST_YEAR,
+  });
+}
+
 /** Changes what is given; new map settings make maps of a new digest at the next computation. */
 export async function updateSurvey(
   actor: Actor,
@@ -250,6 +263,13 @@ export async function updateSurvey(
   await refuseShared(row);
   const { isArchived, ...fields } = input;
   if (fields.leadId) await demandMember(actor, fields.leadId);
+  const { observedFrom, observedTo } = fields;
+  if (observedFrom !== undefined || observedTo !== undefined) {
+    refuseYears({
+      observedFrom: observedFrom === undefined ? row.observedFrom : observedFrom,
+      observedTo: observedTo === undefined ? row.observedTo : observedTo,
+    });
+  }
   await inTransaction(async (transaction) => {
     const archivedAt = isArchived === undefined ? row.archivedAt : isArchived ? new Date() : null;
     await row.update({ ...fields, archivedAt }, { transaction });
