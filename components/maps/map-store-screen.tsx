@@ -76,6 +76,7 @@ function StoreTable({ collaboration, store, shownSlug, setSlug }: StoreTableProp
           <HeadCell isNumeric>missing</HeadCell>
           <HeadCell isNumeric>cannot be made</HeadCell>
           <HeadCell isNumeric>as uploaded</HeadCell>
+          <HeadCell isNumeric>no curve and no map</HeadCell>
           <HeadCell>why not current</HeadCell>
         </tr>
       </TableHead>
@@ -97,6 +98,7 @@ function StoreTable({ collaboration, store, shownSlug, setSlug }: StoreTableProp
             <Cell isNumeric>{standings.missing}</Cell>
             <Cell isNumeric>{standings.failed}</Cell>
             <Cell isNumeric>{standings.uploaded}</Cell>
+            <Cell isNumeric>{standings.none}</Cell>
             <Cell className="min-w-48">
               {listReasons(reasons) || '–'}{' '}
               {slug !== shownSlug && (

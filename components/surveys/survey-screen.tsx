@@ -13,6 +13,7 @@ import { type Fact, FactsStrip } from '@/components/ui/facts-strip';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
+import { StateMark } from '@/components/ui/state-mark';
 import { Tabs } from '@/components/ui/tabs';
 import { TextAction } from '@/components/ui/text-action';
 import type { Packed } from '@/lib/schemas/packed';
@@ -56,7 +57,13 @@ function factsOf(survey: SurveyView): Fact[] {
       name: 'maps ready',
       help: 'completeness-map',
       value: survey.maps.ready,
-      note: `of ${survey.targets}`,
+      note: survey.maps.stale ? (
+        <>
+          of {survey.targets}, <StateMark kind="warn">{survey.maps.stale} stale</StateMark>
+        </>
+      ) : (
+        `of ${survey.targets}`
+      ),
     },
     { name: 'also in another survey', help: 'star', value: survey.alsoInAnother },
     { name: 'vetted detections', help: 'detection', value: companions.confirmed },
@@ -125,6 +132,8 @@ export function SurveyScreen(props: SurveyScreenProps) {
       setRefusal(sentenceOf(reason));
     }
   };
+  const areMapsMissing = survey.maps.ready < survey.targets;
+  const isStale = Boolean(survey.maps.stale);
   const remarks = list.targets.filter((target) => target.checks.length > 0);
   return (
     <>
@@ -170,8 +179,14 @@ export function SurveyScreen(props: SurveyScreenProps) {
             )}
             {survey.can.import && (
               <>
-                {survey.curves > 0 && survey.maps.ready < survey.targets && !isOpen && (
-                  <Button onClick={() => void compute()}>Compute the missing maps</Button>
+                {survey.curves > 0 && (areMapsMissing || isStale) && !isOpen && (
+                  <Button onClick={() => void compute()}>
+                    {isStale
+                      ? areMapsMissing
+                        ? 'Compute the stale and missing maps'
+                        : 'Compute the stale maps'
+                      : 'Compute the missing maps'}
+                  </Button>
                 )}
                 <LinkButton href={importHref} variant="primary" icon="add">
                   Import files

@@ -14,8 +14,14 @@ import { observedYears } from './observed-years';
 function MapsState({ survey }: { survey: SurveyView }) {
   const { maps, mapJob } = survey;
   const isOpen = mapJob?.status === 'running' || mapJob?.status === 'waiting';
-  const count = `${maps.ready} of ${survey.targets}`;
+  const count = <span className="whitespace-nowrap">{`${maps.ready} of ${survey.targets}`}</span>;
   if (isOpen) return <StateMark kind="running">{count}</StateMark>;
+  if (maps.stale)
+    return (
+      <StateMark kind="warn">
+        {count}, <span className="whitespace-nowrap">{maps.stale} stale</span>
+      </StateMark>
+    );
   if (maps.failed > 0) return <StateMark kind="warn">{count}</StateMark>;
   if (maps.ready === survey.targets && maps.ready > 0)
     return <StateMark kind="ok">{count}</StateMark>;
@@ -65,7 +71,9 @@ function SummedBar({ survey, most }: { survey: SurveyView; most: number }) {
 
 function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyView>[] {
   const most = Math.max(1e-9, ...list.surveys.map((survey) => survey.summedCompleteness ?? 0));
-  const ready = list.surveys.reduce((sum, survey) => sum + survey.maps.ready, 0);
+  // The counts of stars and entries leave out archived surveys.
+  const counted = list.surveys.filter(({ isArchived }) => !isArchived);
+  const ready = counted.reduce((sum, survey) => sum + survey.maps.ready, 0);
   const shared = list.overlaps.reduce(
     (sum, set) => sum + (set.surveys.length > 1 ? set.stars : 0),
     0,
@@ -122,7 +130,6 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
         </>
       ),
       name: 'maps ready',
-      className: 'whitespace-nowrap',
       value: ({ maps }) => maps.ready,
       cell: (survey) => <MapsState survey={survey} />,
       total: `${ready} of ${list.entries}`,

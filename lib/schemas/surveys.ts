@@ -66,7 +66,14 @@ export const surveySchema = z.object({
   targets: z.number(),
   alsoInAnother: z.number(),
   curves: z.number(),
-  maps: z.object({ ready: z.number(), waiting: z.number(), failed: z.number(), none: z.number() }),
+  maps: z.object({
+    ready: z.number(),
+    waiting: z.number(),
+    failed: z.number(),
+    none: z.number(),
+    /** Made from other inputs than hold now; null while maps are computed, and of archived surveys. */
+    stale: z.number().nullable(),
+  }),
   companions: z.object({
     confirmed: z.number(),
     candidate: z.number(),

@@ -1,7 +1,9 @@
 import { QueryTypes } from 'sequelize';
 import type { JobView } from '@/lib/schemas/jobs';
 import { database, JobRow, PersonRow, ShareRow, type SurveyRow } from '@/models';
+import { readMapStates } from '@/models/map-standings';
 import { describeJobs } from './jobs';
+import { isArchived } from './sharing/archived';
 import { currentYardstick, type Yardstick } from './survey-depth';
 
 export interface SurveyCounts {
@@ -27,6 +29,8 @@ export interface SurveyFacts {
   /** The newest job of its maps. */
   jobOf: Map<string, JobView>;
   shareOf: Map<string, ShareRow>;
+  /** Maps that are not what their curves should give now, of surveys that rest. */
+  staleOf: Map<string, number>;
   yardstick: Yardstick;
 }
 
@@ -86,6 +90,21 @@ async function readJobs(ids: string[]): Promise<Map<string, JobView>> {
   return new Map(jobs.map(({ surveyId }, i) => [surveyId as string, views[i]]));
 }
 
+/** Maps on their way change from look to look: only where none is, are they looked through. */
+async function countStale(
+  surveys: SurveyRow[],
+  jobOf: ReadonlyMap<string, JobView>,
+): Promise<Map<string, number>> {
+  const isOpen = ({ id }: SurveyRow) =>
+    ['waiting', 'running'].includes(jobOf.get(id)?.status ?? '');
+  const resting = surveys.filter((survey) => !isArchived(survey) && !isOpen(survey));
+  const counts = new Map<string, number>();
+  for (const [id, states] of await readMapStates(resting)) {
+    counts.set(id, states.filter(({ standing }) => standing === 'stale').length);
+  }
+  return counts;
+}
+
 const byId = <Row extends { id: string }>(rows: Row[]) => new Map(rows.map((row) => [row.id, row]));
 
 export async function readSurveyFacts(
@@ -93,12 +112,14 @@ export async function readSurveyFacts(
   surveys: SurveyRow[],
 ): Promise<SurveyFacts> {
   const ids = surveys.map(({ id }) => id);
-  const [countsOf, jobOf, leads, shares, yardstick] = await Promise.all([
+  const jobs = readJobs(ids);
+  const [countsOf, jobOf, staleOf, leads, shares, yardstick] = await Promise.all([
     readCounts(collaborationId, ids),
-    readJobs(ids),
+    jobs,
+    jobs.then((jobOf) => countStale(surveys, jobOf)),
     PersonRow.findAll({ where: { id: surveys.flatMap(({ leadId }) => leadId ?? []) } }),
     ShareRow.findAll({ where: { id: surveys.flatMap(({ shareId }) => shareId ?? []) } }),
     currentYardstick(collaborationId),
   ]);
-  return { countsOf, jobOf, leadOf: byId(leads), shareOf: byId(shares), yardstick };
+  return { countsOf, jobOf, staleOf, leadOf: byId(leads), shareOf: byId(shares), yardstick };
 }

@@ -15,6 +15,7 @@ import {
 } from '@/lib/schemas/surveys';
 import { database, inTransaction, SurveyRow } from '@/models';
 import { recordAudit } from './audit';
+import { isArchived } from './sharing/archived';
 import { describeShared, refuseShared } from './sharing/shared-surveys';
 import { gridOfSettings, summariseMaps, type Yardstick } from './survey-depth';
 import { readSurveyFacts, type SurveyFacts } from './survey-facts';
@@ -124,7 +125,7 @@ async function describeSurvey(
     observedTo: row.observedTo,
     lead: lead ? { id: lead.id, name: lead.name } : null,
     position: row.position,
-    isArchived: row.archivedAt !== null && row.archivedAt <= new Date(),
+    isArchived: isArchived(row),
     // Settings stored earlier lack the rules that came later.
     mapSettings: mapSettingsSchema.parse(row.mapSettings),
     targets: counts?.targets ?? 0,
@@ -135,6 +136,7 @@ async function describeSurvey(
       waiting: counts?.waiting ?? 0,
       failed: counts?.failed ?? 0,
       none: counts?.none ?? 0,
+      stale: facts.staleOf.get(row.id) ?? null,
     },
     companions: {
       confirmed: counts?.confirmed ?? 0,
@@ -261,7 +263,7 @@ export async function updateSurvey(
   const row = await findSurvey(actor, slug);
   demand(actor, 'change-survey', { isLead: isLead(actor, row) });
   await refuseShared(row);
-  const { isArchived, ...fields } = input;
+  const { isArchived: isPutAway, ...fields } = input;
   if (fields.leadId) await demandMember(actor, fields.leadId);
   const { observedFrom, observedTo } = fields;
   if (observedFrom !== undefined || observedTo !== undefined) {
@@ -271,7 +273,7 @@ export async function updateSurvey(
     });
   }
   await inTransaction(async (transaction) => {
-    const archivedAt = isArchived === undefined ? row.archivedAt : isArchived ? new Date() : null;
+    const archivedAt = isPutAway === undefined ? row.archivedAt : isPutAway ? new Date() : null;
     await row.update({ ...fields, archivedAt }, { transaction });
     await recordAudit(
       actor,

@@ -16,6 +16,7 @@ import {
 import { wasChosenForCompanion } from '@/models/sample-selection';
 import { recordAudit } from './audit';
 import { behindRow, type PageAsked } from './behind-row';
+import { isArchived } from './sharing/archived';
 import { refuseShared } from './sharing/shared-surveys';
 import { currentYardstick, summariseMaps } from './survey-depth';
 import { findSurvey, isLead } from './surveys';
@@ -104,8 +105,7 @@ function describeTarget(
   };
 }
 
-const isTakenBack = ({ shareId, archivedAt }: SurveyRow) =>
-  shareId !== null && archivedAt !== null && archivedAt <= new Date();
+const isTakenBack = (survey: SurveyRow) => survey.shareId !== null && isArchived(survey);
 
 async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise<TargetView[]> {
   const mass = survey.mapSettings.massMjup;
