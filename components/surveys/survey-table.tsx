@@ -30,6 +30,7 @@ function MapsState({ survey }: { survey: SurveyView }) {
 
 /** Columns that a narrow screen leaves to the survey's own page. */
 const wide = 'max-md:hidden';
+const wider = 'max-lg:hidden';
 
 function SurveyName({ collaboration, survey }: { collaboration: string; survey: SurveyView }) {
   return (
@@ -57,16 +58,23 @@ function SummedBar({ survey, most }: { survey: SurveyView; most: number }) {
   if (survey.summedCompleteness === null) return '–';
   return (
     <span className="inline-flex items-center justify-end gap-3">
-      <span className={wide}>
+      <span className={wider}>
         <ProbabilityBar
           value={survey.summedCompleteness / most}
           colour={seriesColour(survey.position)}
           width={64}
         />
       </span>
-      {survey.summedCompleteness.toFixed(1)}
+      <span className="lg:min-w-11">{survey.summedCompleteness.toFixed(1)}</span>
     </span>
   );
+}
+
+/** A sum over surveys would count the stars of several of them twice. */
+function summedOnce(surveys: SurveyView[], sharedStars: number): string {
+  const sums = surveys.flatMap(({ summedCompleteness }) => summedCompleteness ?? []);
+  if (sharedStars > 0 || sums.length === 0) return '–';
+  return sums.reduce((sum, value) => sum + value, 0).toFixed(1);
 }
 
 function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyView>[] {
@@ -93,7 +101,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       id: 'observed',
       head: 'observed',
       name: 'first year',
-      className: `whitespace-nowrap ${wide}`,
+      className: `whitespace-nowrap ${wider}`,
       value: ({ observedFrom, observedTo }) => observedFrom ?? observedTo,
       cell: observedYears,
       also: [{ name: 'last year', value: ({ observedTo }) => observedTo }],
@@ -102,7 +110,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       id: 'lead',
       head: 'lead',
       name: 'lead',
-      className: `whitespace-nowrap ${wide}`,
+      className: `whitespace-nowrap ${wider}`,
       value: ({ lead }) => lead?.name ?? null,
     },
     {
@@ -145,6 +153,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       isNumeric: true,
       value: ({ summedCompleteness }) => summedCompleteness,
       cell: (survey) => <SummedBar survey={survey} most={most} />,
+      total: summedOnce(counted, shared),
     },
     {
       id: 'depth',
@@ -152,7 +161,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       name: 'depth of search',
       isUnsorted: true,
       isUnwritten: true,
-      className: wide,
+      className: wider,
       value: () => null,
       cell: ({ name, depth }) =>
         depth && (
