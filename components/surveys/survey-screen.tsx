@@ -80,6 +80,9 @@ function factsOf(survey: SurveyView): Fact[] {
   ];
 }
 
+/** Tabs beside which one target stands. */
+const besideTarget = new Set(['targets', 'maps']);
+
 const hasYears = (survey: SurveyView) => survey.observedFrom !== null || survey.observedTo !== null;
 
 /** A description as part of a sentence: without its full stop, its first word in lower case. */
@@ -114,6 +117,9 @@ export function SurveyScreen(props: SurveyScreenProps) {
   const panel = useRef<HTMLDivElement>(null);
   const selected =
     list.targets.find((target) => target.id === selectedId) ?? list.targets[0] ?? null;
+  const [tab, setTab] = useState('targets');
+  // Beside the lists of something else it would leave half of the page empty.
+  const shown = besideTarget.has(tab) ? selected : null;
   const router = useRouter();
   const select = (id: string) => {
     setSelectedId(id);
@@ -254,9 +260,13 @@ export function SurveyScreen(props: SurveyScreenProps) {
             survey={survey}
             onChanged={() => void mutate()}
           />
-          <div className="mt-5 grid grid-cols-1 gap-x-10 gap-y-10 xl:grid-cols-[minmax(0,1fr)_minmax(340px,390px)]">
+          <div
+            className={`mt-5 grid grid-cols-1 gap-x-10 gap-y-10 ${shown ? 'xl:grid-cols-[minmax(0,1fr)_minmax(340px,390px)]' : ''}`}
+          >
             <Tabs
               label="Parts of the survey"
+              selected={tab}
+              onSelect={setTab}
               tabs={[
                 {
                   id: 'targets',
@@ -301,7 +311,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
                       )}
                       {remarks.map((target) => (
                         <li key={target.id} className="py-2">
-                          <span className="font-semibold">{target.name}</span>:{' '}
+                          <span className="whitespace-nowrap font-semibold">{target.name}</span>:{' '}
                           {target.checks.join('; ')}
                         </li>
                       ))}
@@ -343,15 +353,18 @@ export function SurveyScreen(props: SurveyScreenProps) {
                     ]),
               ]}
             />
-            {selected && (
-              <div ref={panel} className="min-w-0 scroll-mt-4">
+            {shown && (
+              <div
+                ref={panel}
+                className="min-w-0 scroll-mt-4 xl:sticky xl:top-4 xl:max-h-[calc(100dvh-2rem)] xl:self-start xl:overflow-y-auto"
+              >
                 <TargetPanel
-                  key={selected.id}
+                  key={shown.id}
                   collaboration={collaboration}
                   survey={survey}
                   targets={list.targets}
                   companions={companions}
-                  target={selected}
+                  target={shown}
                   population={population}
                   onChanged={() => void mutateTargets()}
                 />
