@@ -71,7 +71,7 @@ export function useTargets(
         );
         targets.push(...page.targets);
         if (page.targets.length === 0 || targets.length >= page.total) {
-          return { targets, total: page.total };
+          return { ...page, targets };
         }
       }
     },

@@ -1,14 +1,19 @@
 import { ProbabilityBar } from '@/components/charts/probability-bar';
+import { YardstickLines } from '@/components/surveys/yardstick-words';
 import type { DataColumn } from '@/components/ui/data-table/column';
+import type { YardstickView } from '@/lib/schemas/yardstick';
 
 /** The detection probability of each row, as a bar and in percent; a dash where there is no map. */
-export function probabilityColumn<Row extends { probability: number | null }>(): DataColumn<Row> {
+export function probabilityColumn<Row extends { probability: number | null }>(
+  yardstick: YardstickView | null,
+): DataColumn<Row> {
   return {
     id: 'seen',
     head: (
       <>
         <span className="max-md:hidden">detection probability</span>
         <span className="md:hidden">seen</span>
+        <YardstickLines yardstick={yardstick} />
       </>
     ),
     name: 'detection probability',

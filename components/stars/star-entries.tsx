@@ -3,6 +3,7 @@
 import { useState } from 'react';
 import { seriesColour } from '@/components/charts/series';
 import { splitStar } from '@/components/hooks/use-stars';
+import { YardstickLines } from '@/components/surveys/yardstick-words';
 import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
@@ -33,7 +34,10 @@ export function StarEntries({ collaboration, star, onChanged }: StarEntriesProps
               host mass, solar masses
             </HeadCell>
             <HeadCell isNumeric>epochs</HeadCell>
-            <HeadCell isNumeric>detection probability</HeadCell>
+            <HeadCell isNumeric>
+              detection probability
+              <YardstickLines yardstick={star.yardstick} />
+            </HeadCell>
             <HeadCell>found by</HeadCell>
           </tr>
         </TableHead>

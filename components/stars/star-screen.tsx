@@ -7,6 +7,7 @@ import { RampKey } from '@/components/charts/ramp-key';
 import { type StarCurve, StarCurvesChart } from '@/components/charts/star-curves-chart';
 import { decidePair, useStar } from '@/components/hooks/use-stars';
 import { useMap } from '@/components/hooks/use-surveys';
+import { RangesWords } from '@/components/surveys/yardstick-words';
 import { Link } from '@/components/ui/link';
 import { JupiterMass } from '@/components/ui/notation';
 import { PageTitle } from '@/components/ui/page-title';
@@ -123,6 +124,7 @@ function Analyses({ collaboration, star }: { collaboration: string; star: StarPa
         <tr>
           <HeadCell>analysis</HeadCell>
           <HeadCell isNumeric>newest run with it</HeadCell>
+          <HeadCell>averaged over</HeadCell>
           <HeadCell isNumeric>detection probability</HeadCell>
           <HeadCell isNumeric>of the sum</HeadCell>
         </tr>
@@ -136,6 +138,7 @@ function Analyses({ collaboration, star }: { collaboration: string; star: StarPa
               </Link>
             </Cell>
             <Cell isNumeric>{one.run}</Cell>
+            <Cell>{one.ranges ? <RangesWords ranges={one.ranges} /> : one.population}</Cell>
             <Cell isNumeric>{`${Math.round(100 * one.probability)}\u2009%`}</Cell>
             <Cell isNumeric>{`${formatPlain(100 * one.share, 2)}\u2009%`}</Cell>
           </Row>

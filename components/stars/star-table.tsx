@@ -4,6 +4,7 @@ import { DataTable } from '@/components/ui/data-table/data-table';
 import { Link } from '@/components/ui/link';
 import { SeriesKey } from '@/components/ui/series-key';
 import type { AgeValue, DistanceValue, StarView } from '@/lib/schemas/stars';
+import type { YardstickView } from '@/lib/schemas/yardstick';
 import { probabilityColumn } from './probability-column';
 import { ageNumbers, conflictWords, distanceNumbers } from './star-words';
 
@@ -131,7 +132,6 @@ const valueColumns: DataColumn<StarView>[] = [
     className: 'max-md:hidden',
     value: ({ epochs }) => epochs,
   },
-  probabilityColumn(),
 ];
 
 const questions: Record<string, { label: string; keeps(star: StarView): boolean }> = {
@@ -164,10 +164,12 @@ interface StarTableProps {
   collaboration: string;
   stars: StarView[];
   surveys: { slug: string; name: string }[];
+  /** What detection probabilities are averaged over. */
+  yardstick: YardstickView | null;
 }
 
 /** One row a star, each once, with the values that its maps rest on. */
-export function StarTable({ collaboration, stars, surveys }: StarTableProps) {
+export function StarTable({ collaboration, stars, surveys, yardstick }: StarTableProps) {
   const survey: Facet<StarView> = {
     id: 'survey',
     label: 'Survey',
@@ -179,7 +181,7 @@ export function StarTable({ collaboration, stars, surveys }: StarTableProps) {
     <DataTable
       caption="Stars, each once"
       rows={stars}
-      columns={[nameColumn(collaboration), ...valueColumns]}
+      columns={[nameColumn(collaboration), ...valueColumns, probabilityColumn(yardstick)]}
       rowId={({ id }) => id}
       noun={{ one: 'star', many: 'stars' }}
       searchLabel="Name or Gaia number"

@@ -58,7 +58,12 @@ export function StarsScreen({ collaboration, initial: packed, surveys }: StarsSc
             `${stars.length} of ${total} stars are here; the others are on their way.`}
         </p>
       )}
-      <StarTable collaboration={collaboration} stars={stars} surveys={surveys} />
+      <StarTable
+        collaboration={collaboration}
+        stars={stars}
+        surveys={surveys}
+        yardstick={list.yardstick}
+      />
     </>
   );
 }

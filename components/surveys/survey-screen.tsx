@@ -34,6 +34,7 @@ import {
   TargetTable,
   UploadList,
 } from './survey-parts';
+import { YardstickWords, yardstickSource } from './yardstick-words';
 
 interface SurveyScreenProps {
   collaboration: string;
@@ -43,7 +44,7 @@ interface SurveyScreenProps {
   uploads: UploadView[];
   shares: Shares;
   coolingName: string | null;
-  /** The newest shared population: detection probabilities are averages over it. */
+  /** Of the yardstick, for its ranges on the map: detection probabilities are averages over it. */
   population: BoxedDefinition | null;
 }
 
@@ -75,6 +76,7 @@ function factsOf(survey: SurveyView): Fact[] {
             name: 'sum of detection probabilities',
             help: 'exposure' as const,
             value: survey.summedCompleteness.toFixed(1),
+            note: survey.yardstick && <YardstickWords yardstick={survey.yardstick} />,
           },
         ]),
   ];
@@ -275,6 +277,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
                   content: (
                     <TargetTable
                       targets={list.targets}
+                      yardstick={list.yardstick}
                       selectedId={selected?.id ?? null}
                       onSelect={select}
                     />
@@ -366,6 +369,7 @@ export function SurveyScreen(props: SurveyScreenProps) {
                   companions={companions}
                   target={shown}
                   population={population}
+                  source={population && yardstickSource(list.yardstick)}
                   onChanged={() => void mutateTargets()}
                 />
               </div>

@@ -10,6 +10,7 @@ import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
 import { observedYears } from './observed-years';
+import { YardstickLines } from './yardstick-words';
 
 function MapsState({ survey }: { survey: SurveyView }) {
   const { maps, mapJob } = survey;
@@ -147,6 +148,7 @@ function columnsOf(collaboration: string, list: SurveyList): DataColumn<SurveyVi
       head: (
         <>
           sum<span className={wide}> of probabilities</span>
+          <YardstickLines yardstick={list.surveys[0]?.yardstick} />
         </>
       ),
       name: 'sum of detection probabilities',

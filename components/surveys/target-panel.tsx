@@ -27,8 +27,10 @@ interface TargetPanelProps {
   targets: TargetView[];
   companions: CompanionView[];
   target: TargetView;
-  /** Whose ranges are drawn on the map; null without a shared population. */
+  /** Whose ranges are drawn on the map; null where lists have no sum of probabilities. */
   population: BoxedDefinition | null;
+  /** Where that population comes from, in words. */
+  source: string | null;
   onChanged(): void;
 }
 
@@ -129,7 +131,8 @@ function LeaveOut({
 
 /** The chosen target: its curves among those of the survey, and its completeness map. */
 export function TargetPanel(props: TargetPanelProps) {
-  const { collaboration, survey, targets, companions, target, population, onChanged } = props;
+  const { collaboration, survey, targets, companions, target, population, source, onChanged } =
+    props;
   const { data: stored, error } = useMap(collaboration, target.mapId);
   const curves = useMemo(
     () =>
@@ -242,8 +245,8 @@ export function TargetPanel(props: TargetPanelProps) {
             {population && target.probability !== null && (
               <p className="mt-1 text-ink3 text-note">
                 Its mean over <MassRange definition={population} /> at{' '}
-                <AxisRange definition={population} /> with <PowerLaws definition={population} /> is{' '}
-                {Math.round(100 * target.probability)} %.
+                <AxisRange definition={population} /> with <PowerLaws definition={population} />,{' '}
+                {source}, is {Math.round(100 * target.probability)} %.
               </p>
             )}
           </>

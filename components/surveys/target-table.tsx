@@ -9,6 +9,7 @@ import { DataTable } from '@/components/ui/data-table/data-table';
 import { StateMark } from '@/components/ui/state-mark';
 import { ErrorTerm } from '@/components/ui/table';
 import type { TargetView } from '@/lib/schemas/surveys';
+import type { YardstickView } from '@/lib/schemas/yardstick';
 import { formatErrorPart, formatMeasured } from './measured';
 
 /** Columns that a narrow screen leaves to the panel of the chosen star. */
@@ -70,7 +71,7 @@ const nameColumn = (
   ),
 });
 
-const valueColumns: DataColumn<TargetView>[] = [
+const columnsOf = (yardstick: YardstickView): DataColumn<TargetView>[] => [
   {
     id: 'type',
     head: 'type',
@@ -147,7 +148,7 @@ const valueColumns: DataColumn<TargetView>[] = [
       );
     },
   },
-  probabilityColumn(),
+  probabilityColumn(yardstick),
   {
     id: 'also',
     head: 'also in',
@@ -191,12 +192,14 @@ const sharing: Facet<TargetView> = {
 
 interface TargetTableProps {
   targets: TargetView[];
+  /** What detection probabilities are averaged over. */
+  yardstick: YardstickView;
   selectedId: string | null;
   onSelect(id: string): void;
 }
 
 /** Targets with filters that combine; the count of what is shown is always said. */
-export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps) {
+export function TargetTable({ targets, yardstick, selectedId, onSelect }: TargetTableProps) {
   const facets = useMemo(() => {
     const groups = [...new Set(targets.map(groupOf))].sort();
     const group: Facet<TargetView> = {
@@ -212,7 +215,7 @@ export function TargetTable({ targets, selectedId, onSelect }: TargetTableProps)
     <DataTable
       caption="Targets of the survey"
       rows={targets}
-      columns={[nameColumn(selectedId, onSelect), ...valueColumns]}
+      columns={[nameColumn(selectedId, onSelect), ...columnsOf(yardstick)]}
       rowId={({ id }) => id}
       noun={{ one: 'target', many: 'targets' }}
       searchLabel="Star, group or type"

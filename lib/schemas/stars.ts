@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment, pageSchema, positiveSchema } from './common';
 import { companionSchema, curveSchema } from './surveys';
+import { yardstickSchema } from './yardstick';
 
 const errorSchema = z.number().finite().min(0);
 
@@ -109,7 +110,7 @@ export const starSchema = z.object({
     distance: z.union([z.number(), z.literal('differs')]).nullable(),
   }),
   epochs: z.number(),
-  /** Under the newest shared population, of the entry that sees most. */
+  /** Under the yardstick, of the entry that sees most. */
   probability: z.number().nullable(),
   undecided: z.number(),
 });
@@ -127,6 +128,8 @@ export const starListSchema = z.object({
   stars: z.array(starSchema),
   /** After the filters. */
   total: z.number(),
+  /** What detection probabilities are averaged over; without one there are none. */
+  yardstick: yardstickSchema.nullable(),
   /** Of the whole collaboration. */
   counts: z.object({
     stars: z.number(),
@@ -285,6 +288,8 @@ export const valueTablesSchema = z.object({ tables: z.array(valueTableSchema) })
 
 /** One star with everything that hangs on it. */
 export const starPageSchema = starSchema.extend({
+  /** What the detection probabilities of its entries are averaged over. */
+  yardstick: yardstickSchema.nullable(),
   curves: z.array(curveSchema.extend({ targetId: idSchema, survey: z.string() })),
   companions: z.array(companionSchema.extend({ survey: z.string() })),
   analyses: z.array(
@@ -293,6 +298,16 @@ export const starPageSchema = starSchema.extend({
       name: z.string(),
       run: z.number(),
       probability: z.number(),
+      /** What that probability is averaged over; ranges where it has one box for all stars. */
+      population: z.string(),
+      ranges: yardstickSchema
+        .pick({
+          massMinMjup: true,
+          massMaxMjup: true,
+          semiMajorAxisMinAu: true,
+          semiMajorAxisMaxAu: true,
+        })
+        .nullable(),
       /** Of the sum of detection probabilities of that run. */
       share: z.number(),
     }),

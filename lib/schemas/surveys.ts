@@ -4,6 +4,7 @@ import { startConditionSchema } from './cooling';
 import { jobSchema } from './jobs';
 import { mapSettingsSchema } from './sensitivity';
 import { sharedFromSchema } from './sharing';
+import { yardstickSchema } from './yardstick';
 
 export type { MapSettings } from './sensitivity';
 
@@ -80,10 +81,11 @@ export const surveySchema = z.object({
     ambiguous: z.number(),
     background: z.number(),
   }),
-  /** Sum over stars of the map averaged over mass (log-uniform 2–30 MJ) at each semi-major axis. */
+  /** Sum over stars of the map averaged over mass at each semi-major axis. */
   depth: z.object({ semiMajorAxisAu: z.array(z.number()), stars: z.array(z.number()) }).nullable(),
-  /** Sum of detection probabilities under the newest shared population, if there is one. */
+  /** Sum of detection probabilities under the yardstick, if there is one. */
   summedCompleteness: z.number().nullable(),
+  yardstick: yardstickSchema.nullable(),
   mapJob: jobSchema.nullable(),
   can: z.object({ change: z.boolean(), import: z.boolean(), offer: z.boolean().optional() }),
   /** Where another collaboration owns it. */
@@ -149,7 +151,7 @@ export const targetSchema = z.object({
   mapId: idSchema.nullable(),
   mapState: z.enum(['none', 'waiting', 'ready', 'failed']),
   mapFault: z.string().nullable(),
-  /** Detection probability under the newest shared population. */
+  /** Detection probability under the yardstick of the list. */
   probability: z.number().nullable(),
   alsoIn: z.array(z.object({ slug: z.string(), name: z.string(), position: z.number() })),
   leftOutReason: z.string().nullable(),
@@ -159,7 +161,12 @@ export const targetSchema = z.object({
   checks: z.array(z.string()),
 });
 export type TargetView = z.infer<typeof targetSchema>;
-export const targetListSchema = z.object({ targets: z.array(targetSchema), total: z.number() });
+export const targetListSchema = z.object({
+  targets: z.array(targetSchema),
+  total: z.number(),
+  /** What their detection probabilities are averaged over. */
+  yardstick: yardstickSchema,
+});
 export type TargetList = z.infer<typeof targetListSchema>;
 export const leaveOutSchema = z
   .strictObject({

@@ -19,7 +19,7 @@ import {
   type Sky,
 } from './star-facts';
 import { matchesOf } from './star-overlaps';
-import { currentYardstick, gridOfSettings, summariseMaps } from './survey-depth';
+import { currentYardstick, gridOfSettings, summariseMaps, type Yardstick } from './survey-depth';
 import { companionView } from './targets';
 import { together } from './together';
 
@@ -30,10 +30,10 @@ const foldedNames = (star: ListedStar, entries: EntryRow[]) =>
 async function probabilitiesOf(
   collaborationId: string,
   entries: EntryRow[],
+  yardstick: Yardstick,
 ): Promise<Map<string, number>> {
-  const yardstick = await currentYardstick(collaborationId);
   const found = new Map<string, number>();
-  if (!yardstick.isShared) return found;
+  if (yardstick.isFlat) return found;
   const surveys = await SurveyRow.findAll({
     attributes: ['id', 'mapSettings'],
     where: { id: [...new Set(entries.map(({ surveyId }) => surveyId))] },
@@ -136,16 +136,20 @@ export async function listStars(actor: Actor, query: StarsAsked): Promise<StarLi
 }
 
 async function readStars(collaborationId: string, query: StarsAsked): Promise<StarList> {
-  const sky = await loadSky(collaborationId);
+  const [sky, yardstick] = await Promise.all([
+    loadSky(collaborationId),
+    currentYardstick(collaborationId),
+  ]);
   const asked = sky.stars.filter((star) => isAsked(star, sky, query));
   const page = pageOf(asked, query, ({ id }) => id);
   const shown = page.flatMap(({ id }) => sky.entriesOf.get(id) ?? []);
-  const probabilities = await probabilitiesOf(collaborationId, shown);
+  const probabilities = await probabilitiesOf(collaborationId, shown, yardstick);
   const conflicts = sky.stars.map((star) => openConflicts(star, sky));
   const entries = [...sky.entriesOf.values()];
   return {
     stars: page.map((star) => describeStar(star, sky, probabilities)),
     total: asked.length,
+    yardstick: yardstick.isFlat ? null : yardstick.view,
     counts: {
       stars: sky.stars.length,
       entries: entries.reduce((sum, rows) => sum + rows.length, 0),
@@ -181,17 +185,22 @@ export async function leadsStar(actor: Actor, entries: Pick<EntryRow, 'surveyId'
 function analysesOf(starId: string): Promise<StarPage['analyses']> {
   return database().query<StarPage['analyses'][number]>(
     `select 'A-' || a.number as key, a.name, used.number as run, used.probability,
-       used.probability / nullif(used.total, 0) as share
+       used.probability / nullif(used.total, 0) as share, p.name as population,
+       case when p.definition->>'form' in ('power-law', 'shaped') then jsonb_build_object(
+         'massMinMjup', p.definition->'massMinMjup', 'massMaxMjup', p.definition->'massMaxMjup',
+         'semiMajorAxisMinAu', p.definition->'semiMajorAxisMinAu',
+         'semiMajorAxisMaxAu', p.definition->'semiMajorAxisMaxAu') end as ranges
      from (
        select newest.*,
          (select sum(o.mean_completeness) from run_star o where o.run_id = newest.id) as total
        from (
-         select distinct on (r.analysis_id) r.id, r.analysis_id, r.number,
+         select distinct on (r.analysis_id) r.id, r.analysis_id, r.number, r.recipe,
            s.mean_completeness as probability
          from run r join run_star s on s.run_id = r.id
          where s.star_id in (select joined_stars($1))
          order by r.analysis_id, r.number desc) newest) used
      join analysis a on a.id = used.analysis_id
+       join population p on p.id = (used.recipe->>'populationId')::uuid
      order by a.number`,
     { bind: [starId], type: QueryTypes.SELECT },
   );
@@ -216,13 +225,16 @@ async function combinedOf(starId: string): Promise<StarPage['combined']> {
 export async function getStar(actor: Actor, id: string): Promise<StarPage> {
   const star = await findStar(actor, id);
   const { collaborationId } = actor;
-  const sky = await loadSky(collaborationId, star.id);
+  const [sky, yardstick] = await Promise.all([
+    loadSky(collaborationId, star.id),
+    currentYardstick(collaborationId),
+  ]);
   const rows = sky.entriesOf.get(star.id);
   if (!rows) throw new NotFound('star');
   const targetIds = rows.map(({ targetId }) => targetId);
   const [probabilities, curves, companions, analyses, matches, isLead, combined] =
     await Promise.all([
-      probabilitiesOf(collaborationId, rows),
+      probabilitiesOf(collaborationId, rows, yardstick),
       ContrastCurveRow.findAll({
         where: { targetId: targetIds, replacedAt: null },
         order: [
@@ -240,6 +252,7 @@ export async function getStar(actor: Actor, id: string): Promise<StarPage> {
   const surveyOf = (targetId: string) => ownerOf.get(targetId)?.surveyName ?? '';
   return {
     ...describeStar(star, sky, probabilities),
+    yardstick: yardstick.isFlat ? null : yardstick.view,
     curves: curves.map((curve) => ({
       id: curve.id,
       targetId: curve.targetId,

@@ -1,4 +1,4 @@
-import { literal, Op } from 'sequelize';
+import { QueryTypes } from 'sequelize';
 import { logSpacedAxis } from '@/lib/numerics/grid';
 import {
   type PowerLawPopulation,
@@ -6,6 +6,7 @@ import {
   type ShapedPopulation,
 } from '@/lib/population';
 import type { MapSettings } from '@/lib/schemas/surveys';
+import type { YardstickView } from '@/lib/schemas/yardstick';
 import {
   type CompletenessMap,
   combineDeepest,
@@ -14,8 +15,9 @@ import {
   type MapGrid,
   regridNodes,
 } from '@/lib/sensitivity';
-import { PopulationRow } from '@/models';
+import { database } from '@/models';
 import { type PassingMap, streamMaps } from '@/models/map-stream';
+import { LEAD_ANALYSIS } from './lead-analysis';
 
 /** One map seen through a population: its mean, and its profile along semi-major axis. */
 interface MapSummary {
@@ -30,7 +32,7 @@ const CACHE_SIZE = 20_000;
 const READ_AT_ONCE = 100;
 const cache = new Map<string, MapSummary>();
 
-/** Shape for surveys of a collaboration that has shared no population yet: flat in both logarithms. */
+/** For a collaboration without a lead analysis or shared population: flat in both logarithms. */
 const FLAT: PowerLawPopulation = {
   form: 'power-law',
   massMinMjup: 2,
@@ -43,31 +45,75 @@ const FLAT: PowerLawPopulation = {
 
 export interface Yardstick {
   population: PowerLawPopulation | ShapedPopulation;
+  /** What summaries of maps are kept under. */
   key: string;
-  isShared: boolean;
+  /** Nobody asked for it: lists state no sum under it. */
+  isFlat: boolean;
+  /** What answers say of it. */
+  view: YardstickView;
 }
 
+interface Chosen {
+  definition: PowerLawPopulation | ShapedPopulation;
+  digest: string;
+  name: string;
+  number: number;
+  version: number;
+  analysis: number | null;
+}
+
+/** Mass ratios depend on each star's mass, tabulated systems on whole systems. */
+const CHOSEN = `
+  with lead as (${LEAD_ANALYSIS})
+  select p.definition, p.digest, p.name, p.number, p.version, lead.number as analysis
+  from population p left join lead on p.id = (lead.recipe->>'populationId')::uuid
+  where p.collaboration_id = $1 and p.definition->>'form' in ('power-law', 'shaped')
+    and (lead.id is not null or p.is_shared)
+  order by lead.id is not null desc, p.created_at desc
+  limit 1`;
+
+const rangesOf = ({
+  massMinMjup,
+  massMaxMjup,
+  semiMajorAxisMinAu,
+  semiMajorAxisMaxAu,
+}: Yardstick['population']) => ({
+  massMinMjup,
+  massMaxMjup,
+  semiMajorAxisMinAu,
+  semiMajorAxisMaxAu,
+});
+
+const FLAT_YARDSTICK: Yardstick = {
+  population: FLAT,
+  key: 'flat',
+  isFlat: true,
+  view: { population: null, key: null, version: null, analysis: null, ...rangesOf(FLAT) },
+};
+
 /**
- * The population through which lists show sensitivity: the newest that is shared and has one box
- * for all stars. Mass ratios depend on each star's mass, tabulated systems on whole systems.
+ * The population through which lists show sensitivity: that of the lead analysis where it has one
+ * box for all stars, else the newest such one that is shared.
  */
 export async function currentYardstick(collaborationId: string): Promise<Yardstick> {
-  const row = await PopulationRow.findOne({
-    where: {
-      collaborationId,
-      isShared: true,
-      [Op.and]: literal(`definition->>'form' in ('power-law', 'shaped')`),
-    },
-    order: [['createdAt', 'DESC']],
+  const [chosen] = await database().query<Chosen>(CHOSEN, {
+    bind: [collaborationId],
+    type: QueryTypes.SELECT,
   });
-  const isBoxed = row?.definition.form === 'power-law' || row?.definition.form === 'shaped';
-  return row && isBoxed
-    ? {
-        population: row.definition as PowerLawPopulation | ShapedPopulation,
-        key: row.digest,
-        isShared: true,
-      }
-    : { population: FLAT, key: 'flat', isShared: false };
+  if (!chosen) return FLAT_YARDSTICK;
+  const { definition, digest, name, number, version, analysis } = chosen;
+  return {
+    population: definition,
+    key: digest,
+    isFlat: false,
+    view: {
+      population: name,
+      key: `P-${number}`,
+      version,
+      analysis: analysis === null ? null : `A-${analysis}`,
+      ...rangesOf(definition),
+    },
+  };
 }
 
 /** Sees maps through one population, on one grid. */

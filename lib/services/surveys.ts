@@ -84,7 +84,7 @@ async function sensitivityOf(
   }
   return {
     depth: { semiMajorAxisAu: [...grid.semiMajorAxisAu], stars: [...stars] },
-    summedCompleteness: yardstick.isShared ? summed : null,
+    summedCompleteness: yardstick.isFlat ? null : summed,
   };
 }
 
@@ -145,6 +145,7 @@ async function describeSurvey(
       background: counts?.background ?? 0,
     },
     ...sensitivity,
+    yardstick: facts.yardstick.isFlat ? null : facts.yardstick.view,
     mapJob: facts.jobOf.get(row.id) ?? null,
     can: {
       change: isOwn && may(actor, 'change-survey', item),

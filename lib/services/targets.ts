@@ -107,7 +107,10 @@ function describeTarget(
 
 const isTakenBack = (survey: SurveyRow) => survey.shareId !== null && isArchived(survey);
 
-async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise<TargetView[]> {
+async function describeTargets(
+  survey: SurveyRow,
+  targets: TargetRow[],
+): Promise<Pick<TargetList, 'targets' | 'yardstick'>> {
   const mass = survey.mapSettings.massMjup;
   const axis = survey.mapSettings.semiMajorAxisAu;
   const grid = {
@@ -135,14 +138,17 @@ async function describeTargets(survey: SurveyRow, targets: TargetRow[]): Promise
   for (const curve of curves) {
     curvesOf.set(curve.targetId, [...(curvesOf.get(curve.targetId) ?? []), curve]);
   }
-  return targets.map((target) =>
-    describeTarget(
-      target,
-      curvesOf.get(target.id) ?? [],
-      sharing.get(target.starId) ?? [],
-      (target.mapId && summaries.get(target.mapId)?.probability) ?? null,
+  return {
+    targets: targets.map((target) =>
+      describeTarget(
+        target,
+        curvesOf.get(target.id) ?? [],
+        sharing.get(target.starId) ?? [],
+        (target.mapId && summaries.get(target.mapId)?.probability) ?? null,
+      ),
     ),
-  );
+    yardstick: yardstick.view,
+  };
 }
 
 const EASTWARD = {
@@ -186,7 +192,7 @@ async function readTargets(
     offset,
   });
   const total = await TargetRow.count({ where });
-  return { targets: await describeTargets(survey, rows), total };
+  return { ...(await describeTargets(survey, rows)), total };
 }
 
 async function findTarget(
@@ -205,7 +211,8 @@ async function findTarget(
 
 export async function getTarget(actor: Actor, id: string): Promise<TargetView> {
   const { target, survey } = await findTarget(actor, id);
-  return (await describeTargets(survey, [target]))[0];
+  const { targets } = await describeTargets(survey, [target]);
+  return targets[0];
 }
 
 /**

@@ -193,8 +193,12 @@ export const starDefinitions: readonly ColumnDefinition[] = [
   number('adopted_age', 'Age that maps rest on', { measures: 'age', ucd: 'time.age' }),
   text('adopted_age_source', 'Where that age comes from', 'meta.note'),
   { name: 'epochs', type: 'integer', description: 'Epochs of observation', ucd: 'meta.number' },
-  number('probability', 'Mean detection probability under the newest shared population', {
-    ucd: 'stat.probability',
-  }),
+  number(
+    'probability',
+    'Mean detection probability under the population of the lead analysis, else the newest shared one',
+    {
+      ucd: 'stat.probability',
+    },
+  ),
   text('left_out_reason', 'Why the entry is left out', 'meta.note'),
 ];

@@ -42,7 +42,7 @@ export default async function SurveyPage({
           uploads={uploads}
           shares={shares}
           coolingName={await nameCooling(actor, survey)}
-          population={yardstick.isShared ? yardstick.population : null}
+          population={yardstick.isFlat ? null : yardstick.population}
         />
         <NotesOf actor={actor} on={{ kind: 'survey', key: slug }} />
       </>
