@@ -115,8 +115,11 @@ function inWords(passes: boolean, coverage: readonly Coverage[], surveys: number
       ? b
       : a,
   );
+  const level = `the ${describeLevel(worst.level)} limit`;
+  const named =
+    coverage.length === 1 ? level : `furthest off of the ${coverage.length} levels asked, ${level}`;
   const held =
-    `the ${describeLevel(worst.level)} limit held in ${formatPercent(worst.observed, 3)} of ` +
+    `${named} held in ${formatPercent(worst.observed, 3)} of ` +
     `${surveys} invented surveys, where ${formatPercent(worst.expected, 3)} is expected`;
   return passes
     ? `Limits hold as often as they say: ${held}, and the truths spread evenly over their posteriors`

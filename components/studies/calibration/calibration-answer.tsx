@@ -21,6 +21,7 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
   const isFraction = asked.quantity === 'host_fraction';
   const level = describeLevel(asked.credibleLevel);
   const rateName = isFraction ? 'true host fraction' : 'true rate, planets per 100 stars';
+  const unit = isFraction ? '\u2009%' : '';
   const known = result.atTruth.flatMap(({ exact, rate, ...row }) =>
     exact === null ? [] : [{ ...row, x: rate, expected: exact }],
   );
@@ -90,11 +91,11 @@ export function CalibrationAnswer({ asked, result }: AnswerProps<'calibration'>)
               <CoverageChart
                 points={known}
                 xName={rateName}
-                xUnit={isFraction ? '\u2009%' : ''}
+                xUnit={unit}
                 subject={`Coverage of the ${level} limit at fixed truths`}
               />
             ) : (
-              <TruthTable rows={result.atTruth} rateName={rateName} />
+              <TruthTable rows={result.atTruth} rateName={rateName} unit={unit} />
             )}
           </section>
         )}

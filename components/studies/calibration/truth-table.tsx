@@ -6,9 +6,12 @@ import type { ResultOf } from '@/lib/schemas/study-results';
 export function TruthTable({
   rows,
   rateName,
+  unit,
 }: {
   rows: ResultOf<'calibration'>['atTruth'];
   rateName: string;
+  /** Written after each true rate: a thin space and %, or nothing. */
+  unit: string;
 }) {
   return (
     <Table caption="How often the limit held at fixed truths">
@@ -23,7 +26,7 @@ export function TruthTable({
       <TableBody>
         {rows.map(({ rate, exact, observed, standardError }) => (
           <Row key={rate}>
-            <Cell>{formatPlain(100 * rate)}</Cell>
+            <Cell>{`${formatPlain(100 * rate)}${unit}`}</Cell>
             <Cell isNumeric>{formatPercent(observed, 3)}</Cell>
             <Cell isNumeric>{`${formatSignificant(100 * standardError, 2)} points`}</Cell>
             <Cell isNumeric>{exact === null ? 'left open' : formatPercent(exact, 3)}</Cell>

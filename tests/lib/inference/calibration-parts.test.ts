@@ -83,7 +83,9 @@ describe('calibration of a wrong analysis fails', () => {
     const truth = { completeness: completeness.map((c) => c / 1.3) };
     const wrong = judge(setup({ truth, surveys: 3000 }));
     expect(wrong.passes).toBe(false);
-    expect(wrong.verdict).toMatch(/^Limits do not hold/);
+    expect(wrong.verdict).toMatch(
+      /^Limits do not hold as often as they say: furthest off of the \d levels asked, the [\d.]+\u2009% limit held/,
+    );
     expect(judge(setup({ likelihood: 'mean-number', truth, surveys: 3000 })).passes).toBe(false);
   });
 
