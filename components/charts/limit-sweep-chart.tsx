@@ -23,6 +23,8 @@ export interface LimitSweepChartProps {
   detections: number[];
   exposure: number[];
   isSetByPrior: boolean[];
+  /** Where companions lie along the parameter: there the number of detections changes at once. */
+  entries?: number[];
   /** The run's own value and limit. */
   here?: { x: number; limit: number };
   quantity: RateQuantity;
@@ -49,6 +51,8 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
   const y = isLog
     ? scaleLog([low * 0.9, high * 1.1], [frame.bottom, frame.top])
     : scaleLinear([0, high * 1.08], [frame.bottom, frame.top]);
+  const stepAt = stepPlaces(axis.at, detections, props.entries ?? []);
+  const curve = steppedCurve(axis.at, limit, stepAt);
   const hasDetections = detections.some((count) => count > 0);
   const yTicks = isLog
     ? logTicks(90 * low, 110 * high, frame.bottom - frame.top)
@@ -94,7 +98,14 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
       <text className="quiet" x={0} y={14}>
         upper limit ({props.levelLabel}), {rateUnit(quantity)}
       </text>
-      <Counts detections={detections} x={(index) => x(axis.at[index])} frame={frame} />
+      <Counts
+        detections={detections}
+        edge={(index) => {
+          const place = stepAt.get(index - 1);
+          return place === undefined ? (x(axis.at[index]) + x(axis.at[index - 1])) / 2 : x(place);
+        }}
+        frame={frame}
+      />
       {hasDetections && (
         <path className="alternative-line" d={linePath(axis.at, limitZero, x, y)} />
       )}
@@ -117,12 +128,13 @@ export function LimitSweepChart(props: LimitSweepChartProps) {
           </text>
         </g>
       ))}
-      <path className="sweep-line" d={linePath(axis.at, limit, x, y)} />
+      <path className="sweep-line" d={linePath(curve.at, curve.values, x, y)} />
       {hasDetections && <ZeroName data={props} frame={frame} x={x} y={y} />}
       {here && here.x >= ends[0] && here.x <= ends[1] && (
         <Here
           x={x(here.x)}
           y={y(here.limit)}
+          curve={curve.at.map((value, index) => ({ x: x(value), y: y(curve.values[index]) }))}
           frame={frame}
           words={`this run: ${formatLimit(here.limit, quantity)}`}
         />
@@ -165,18 +177,19 @@ type Scale = (value: number) => number;
 /** Where the number of detections inside changes, along the top. */
 function Counts({
   detections,
-  x,
+  edge,
   frame,
 }: {
   detections: number[];
-  x(index: number): number;
+  /** Where the value of this index begins to hold. */
+  edge(index: number): number;
   frame: Box;
 }) {
   const runs = stepsOf(detections);
   if (runs.length === 1 && runs[0].count === 0) return null;
   return runs.map(({ from, to, count }, index) => {
-    const start = index === 0 ? frame.left : (x(from) + x(from - 1)) / 2;
-    const end = index === runs.length - 1 ? frame.right : (x(to) + x(to + 1)) / 2;
+    const start = index === 0 ? frame.left : edge(from);
+    const end = index === runs.length - 1 ? frame.right : edge(to + 1);
     const words = end - start > 96 ? countWords(count) : String(count);
     return (
       <g key={from}>
@@ -206,6 +219,34 @@ export function stepsOf(counts: number[]): { from: number; to: number; count: nu
     else steps.push({ from: index, to: index, count });
   });
   return steps;
+}
+
+/**
+ * Where a companion enters or leaves between two values: after the index of the first. Without one
+ * such place, as with two companions between the same values, nothing is known of it.
+ */
+export function stepPlaces(
+  at: number[],
+  detections: number[],
+  entries: number[],
+): Map<number, number> {
+  const places = new Map<number, number>();
+  for (let index = 0; index < at.length - 1; index += 1) {
+    if (detections[index] === detections[index + 1]) continue;
+    const inside = entries.filter((entry) => entry >= at[index] && entry <= at[index + 1]);
+    if (inside.length === 1) places.set(index, inside[0]);
+  }
+  return places;
+}
+
+/** The curve through its values, with a jump at each step. */
+export function steppedCurve(at: number[], values: number[], stepAt: Map<number, number>) {
+  const points = at.flatMap((value, index) => {
+    const place = stepAt.get(index);
+    const own = [value, values[index]];
+    return place === undefined ? [own] : [own, [place, values[index]], [place, values[index + 1]]];
+  });
+  return { at: points.map(([value]) => value), values: points.map(([, value]) => value) };
 }
 
 /** First and last index of each run of true. */
@@ -254,8 +295,23 @@ function ZeroName({
   );
 }
 
-function Here({ x, y, frame, words }: { x: number; y: number; frame: Box; words: string }) {
-  const hangsLeft = x + textWidth(words, 13) + 24 > frame.right;
+interface HereProps {
+  x: number;
+  y: number;
+  /** Points of the curve, px. */
+  curve: { x: number; y: number }[];
+  frame: Box;
+  words: string;
+}
+
+/** The run on the curve; its words stand above what of the curve passes there, else below. */
+function Here({ x, y, curve, frame, words }: HereProps) {
+  const width = textWidth(words, 13) + 24;
+  const hangsLeft = x + width > frame.right;
+  const [from, to] = hangsLeft ? [x - width, x] : [x, x + width];
+  const passing = [y, ...curve.filter((one) => one.x >= from && one.x <= to).map((one) => one.y)];
+  const above = Math.min(...passing) - 12;
+  const below = Math.min(Math.max(...passing) + 22, frame.bottom - 6);
   return (
     <g>
       <line className="stem" x1={x} x2={x} y1={y} y2={frame.bottom} />
@@ -263,7 +319,7 @@ function Here({ x, y, frame, words }: { x: number; y: number; frame: Box; words:
       <text
         className="bound-text page-halo"
         x={hangsLeft ? x - 11 : x + 11}
-        y={Math.max(frame.top + 14, y - 12)}
+        y={above >= frame.top + 14 ? above : below}
         textAnchor={hangsLeft ? 'end' : 'start'}
       >
         {words}

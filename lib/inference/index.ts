@@ -138,6 +138,13 @@ export {
 } from './statement';
 export type { IndexPlane, Sweep, SweepParameter } from './sweep';
 export { sweepIndices, sweepLimits, withParameter } from './sweep';
+export type { SweptParameter } from './sweep-words';
+export {
+  describeSweepValue,
+  parameterWithUnit,
+  quotedSweepValue,
+  sweptParameters,
+} from './sweep-words';
 export type { DensityTable } from './tabulated-prior';
 export { densityAt, tabulatePosterior } from './tabulated-prior';
 export type { TailLimits } from './tail-limits';

@@ -1,4 +1,4 @@
-import { parameterWithUnit } from '@/lib/inference/sweep-parameters';
+import { parameterWithUnit } from '@/lib/inference';
 import type { StudyKind, StudySettings } from '@/lib/schemas/study-settings';
 
 /** What each further question is called. */

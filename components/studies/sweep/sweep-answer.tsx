@@ -3,13 +3,12 @@
 import { useMemo } from 'react';
 import { LimitFieldChart } from '@/components/charts/limit-field-chart';
 import { LimitSweepChart } from '@/components/charts/limit-sweep-chart';
-import { describeLevel } from '@/lib/inference';
-import { quotedValue } from '@/lib/inference/sweep-parameters';
+import { describeLevel, quotedSweepValue } from '@/lib/inference';
 import { fromLogIndex } from '@/lib/population';
 import { formatLimit } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
 import type { AnswerProps } from '../kind-entry';
-import { ownValue, sweepAxis } from './sweep-parameters';
+import { companionPlaces, ownValue, sweepAxis } from './sweep-parameters';
 
 /** The limit along one choice, or over the plane of both indices. */
 export function SweepAnswer(props: AnswerProps<'sweep'>) {
@@ -28,10 +27,11 @@ export function SweepAnswer(props: AnswerProps<'sweep'>) {
         detections={result.detections}
         exposure={result.exposure}
         isSetByPrior={result.isSetByPrior}
+        entries={companionPlaces(result.over, asked)}
         here={
           own === undefined
             ? undefined
-            : { x: quotedValue(result.over, own), limit: asked.result.answer.limit }
+            : { x: quotedSweepValue(result.over, own), limit: asked.result.answer.limit }
         }
         quantity={quantity}
         levelLabel={levelLabel}

@@ -3,11 +3,7 @@
 import { JupiterMass, ProportionalTo } from '@/components/ui/notation';
 import { NumberField } from '@/components/ui/number-field';
 import { SelectField } from '@/components/ui/select-field';
-import {
-  quotedValue,
-  type SweepParameter,
-  sweepParameters,
-} from '@/lib/inference/sweep-parameters';
+import { quotedSweepValue, type SweptParameter, sweptParameters } from '@/lib/inference';
 import { toLogIndex } from '@/lib/population';
 import { formatPlain, THIN_SPACE } from '@/lib/quantities/display';
 import { sweepParameterSchema, sweepSettingsSchema } from '@/lib/schemas/study-settings';
@@ -16,19 +12,19 @@ import { SettingsFrame } from '../settings-frame';
 import { readNumber, useSettingsForm } from '../use-settings-form';
 import { ownValue, usualSpan } from './sweep-parameters';
 
-const FIRST: SweepParameter = 'semi-major-axis-max';
+const FIRST: SweptParameter = 'semi-major-axis-max';
 /** A plane of both takes the square of it. */
-const countOf = (over: SweepParameter) => (over === 'both-indices' ? '21' : '31');
+const countOf = (over: SweptParameter) => (over === 'both-indices' ? '21' : '31');
 const plain = (value: number) => String(Number(value.toPrecision(6)));
 
 export function SweepForm(props: FormProps<'sweep'>) {
   const { asked, start } = props;
-  const spanOf = (over: SweepParameter) => {
+  const spanOf = (over: SweptParameter) => {
     const span = usualSpan(over, asked);
     return {
       over,
-      from: plain(quotedValue(over, span.from)),
-      to: plain(quotedValue(over, span.to)),
+      from: plain(quotedSweepValue(over, span.from)),
+      to: plain(quotedSweepValue(over, span.to)),
       count: countOf(over),
     };
   };
@@ -37,13 +33,13 @@ export function SweepForm(props: FormProps<'sweep'>) {
     start: start
       ? {
           over: start.over,
-          from: plain(quotedValue(start.over, start.from)),
-          to: plain(quotedValue(start.over, start.to)),
+          from: plain(quotedSweepValue(start.over, start.from)),
+          to: plain(quotedSweepValue(start.over, start.to)),
           count: String(start.count),
         }
       : spanOf(FIRST),
     read: (draft) => {
-      const isIndex = sweepParameters[draft.over as SweepParameter].unit === 'index';
+      const isIndex = sweptParameters[draft.over as SweptParameter].unit === 'index';
       const stored = (text: string) => {
         const value = readNumber(text);
         return isIndex && value !== undefined ? toLogIndex(value, 'linear') : (value ?? text);
@@ -59,8 +55,8 @@ export function SweepForm(props: FormProps<'sweep'>) {
     faults: props.faults,
     onAsk: props.onAsk,
   });
-  const over = form.draft.over as SweepParameter;
-  const { unit } = sweepParameters[over];
+  const over = form.draft.over as SweptParameter;
+  const { unit } = sweptParameters[over];
   const unitSign = unit === 'index' ? undefined : unit === 'MJ' ? <JupiterMass /> : unit;
   const own = ownValue(over, asked);
   return (
@@ -86,7 +82,7 @@ export function SweepForm(props: FormProps<'sweep'>) {
             'Everything else stays as in the run.'
           ) : (
             <>
-              The run used {formatPlain(quotedValue(over, own))}
+              The run used {formatPlain(quotedSweepValue(over, own))}
               {unitSign !== undefined && (
                 <>
                   {THIN_SPACE}
@@ -105,9 +101,9 @@ export function SweepForm(props: FormProps<'sweep'>) {
           label="Limit against"
           options={sweepParameterSchema.options.map((value) => ({
             value,
-            label: sweepParameters[value].name,
+            label: sweptParameters[value].name,
           }))}
-          onChange={(event) => form.setDraft(spanOf(event.target.value as SweepParameter))}
+          onChange={(event) => form.setDraft(spanOf(event.target.value as SweptParameter))}
         />
       </div>
       {(['from', 'to'] as const).map((name) => (

@@ -2,16 +2,12 @@ import type { ReactNode } from 'react';
 import { JupiterMassText } from '@/components/charts/axes';
 import type { FieldAxis } from '@/components/charts/limit-field-chart';
 import { formatIndex } from '@/components/populations/law-notation';
-import {
-  quotedValue,
-  type SweepParameter,
-  sweepParameters,
-} from '@/lib/inference/sweep-parameters';
+import { quotedSweepValue, type SweptParameter, sweptParameters } from '@/lib/inference';
 import { formatPlain } from '@/lib/quantities/display';
 import type { DrawnInputs } from '@/lib/schemas/runs';
 import type { AskedRun } from '../kind-entry';
 
-const symbols: Partial<Record<SweepParameter, ReactNode>> = {
+const symbols: Partial<Record<SweptParameter, ReactNode>> = {
   'mass-index': (
     <>
       mass index <tspan fontStyle="italic">α</tspan>, per d<tspan fontStyle="italic">M</tspan>
@@ -26,11 +22,11 @@ const symbols: Partial<Record<SweepParameter, ReactNode>> = {
 };
 
 /** The axis of a sweep, at stored values, as it is quoted. */
-export function sweepAxis(over: SweepParameter, stored: number[]): FieldAxis {
-  const { name, unit } = sweepParameters[over];
+export function sweepAxis(over: SweptParameter, stored: number[]): FieldAxis {
+  const { name, unit } = sweptParameters[over];
   if (unit === 'index') {
     return {
-      at: stored.map((value) => quotedValue(over, value)),
+      at: stored.map((value) => quotedSweepValue(over, value)),
       isLog: false,
       name: symbols[over] ?? name,
       plainName: name,
@@ -54,7 +50,7 @@ export function sweepAxis(over: SweepParameter, stored: number[]): FieldAxis {
 }
 
 /** The value that the run itself used, as stored; undefined for a population without it. */
-export function ownValue(over: SweepParameter, { definition }: AskedRun): number | undefined {
+export function ownValue(over: SweptParameter, { definition }: AskedRun): number | undefined {
   if (definition?.form !== 'power-law') return undefined;
   switch (over) {
     case 'semi-major-axis-max':
@@ -74,8 +70,20 @@ export function ownValue(over: SweepParameter, { definition }: AskedRun): number
   }
 }
 
+/** Where the companions of the run lie along a range; none along an index. */
+export function companionPlaces(over: SweptParameter, { inputs }: AskedRun): number[] {
+  switch (sweptParameters[over].unit) {
+    case 'AU':
+      return inputs.companions.map(({ semiMajorAxisAu }) => semiMajorAxisAu);
+    case 'MJ':
+      return inputs.companions.map(({ massMjup }) => massMjup);
+    case 'index':
+      return [];
+  }
+}
+
 /** A span worth asking for: the grid on one side, the other end of the run's range on the other. */
-export function usualSpan(over: SweepParameter, asked: AskedRun): { from: number; to: number } {
+export function usualSpan(over: SweptParameter, asked: AskedRun): { from: number; to: number } {
   const { massMjup, semiMajorAxisAu } = asked.inputs.grid as DrawnInputs['grid'];
   const last = (nodes: number[]) => nodes[nodes.length - 1];
   const round = (value: number) => Number(value.toPrecision(2));

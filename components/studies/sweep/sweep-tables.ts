@@ -1,5 +1,5 @@
 import type { DataTable } from '@/components/charts/data-table';
-import { sweepParameters } from '@/lib/inference/sweep-parameters';
+import { sweptParameters } from '@/lib/inference';
 import type { AnswerProps } from '../kind-entry';
 
 const suffix = { AU: '_au', MJ: '_mjup', index: '_per_log' };
@@ -21,7 +21,7 @@ export function sweepTables({ asked, result }: AnswerProps<'sweep'>): DataTable[
     {
       name: `limit along one parameter, ${asked.quantity}`,
       columns: [
-        `${over.replaceAll('-', '_')}${suffix[sweepParameters[over].unit]}`,
+        `${over.replaceAll('-', '_')}${suffix[sweptParameters[over].unit]}`,
         'limit',
         'limit_no_detection',
         'detections',

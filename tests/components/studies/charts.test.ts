@@ -13,7 +13,12 @@ import {
   fieldTables,
   LimitFieldChart,
 } from '@/components/charts/limit-field-chart';
-import { LimitSweepChart, stepsOf } from '@/components/charts/limit-sweep-chart';
+import {
+  LimitSweepChart,
+  stepPlaces,
+  steppedCurve,
+  stepsOf,
+} from '@/components/charts/limit-sweep-chart';
 import { RuleIntervalsChart } from '@/components/charts/rule-intervals-chart';
 import { textWidth } from '@/components/charts/text-width';
 import {
@@ -101,6 +106,25 @@ describe('limitBands', () => {
 
   it('takes finer steps where limits differ by little', () => {
     expect(limitBands(0.05, 0.09).contours).toEqual([0.08, 0.07, 0.06]);
+  });
+});
+
+describe('a companion that enters a range between two values', () => {
+  const at = [100, 110, 121];
+
+  it('makes a jump where it lies', () => {
+    const places = stepPlaces(at, [0, 0, 1], [40, 118]);
+    expect([...places]).toEqual([[1, 118]]);
+    expect(steppedCurve(at, [2, 3, 5], places)).toEqual({
+      at: [100, 110, 118, 118, 121],
+      values: [2, 3, 3, 5, 5],
+    });
+  });
+
+  it('is left as a slope where its place is not known, or is one of two', () => {
+    expect(stepPlaces(at, [0, 0, 1], []).size).toBe(0);
+    expect(stepPlaces(at, [0, 0, 1], [112, 118]).size).toBe(0);
+    expect(steppedCurve(at, [2, 3, 5], new Map())).toEqual({ at, values: [2, 3, 5] });
   });
 });
 
