@@ -14,7 +14,8 @@ export const kindWords: Record<StudyKind, KindWords> = {
   systematics: {
     title: 'What moves the limit',
     help: 'systematics',
-    question: 'Which assumption would move the limit most if it were wrong?',
+    question:
+      'Of what the data rest on (ages, distances, cooling, thresholds, orbits, shared stars), what would move the limit most if it were wrong?',
   },
   'ages-cooling': {
     title: 'Ages and cooling',

@@ -85,7 +85,7 @@ describe('POST runs/{id}/studies', () => {
       result: { kind: 'influence', limit: lab.run.result?.answer.limit },
       inputs: { runResultDigest: lab.run.resultDigest, seed: study.seed },
     });
-    expect(study.headline).toContain('half of the exposure');
+    expect(study.headline).toContain('half of the sensitivity');
     expect(study.resultDigest).toMatch(/^[0-9a-f]{64}$/);
   });
 

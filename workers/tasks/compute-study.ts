@@ -75,7 +75,7 @@ async function store(given: StudyWork, result: StudyResult): Promise<void> {
         inputsDigest: digestOf({ settings: study.settings, inputs }),
         result,
         resultDigest: digestOf(result),
-        headline: headlineOf(result, run.result.quantity),
+        headline: headlineOf(result, { ...run.result, limit: run.result.answer.limit }),
         finishedAt: new Date(),
       },
       { transaction },

@@ -31,7 +31,8 @@ export function SystematicsAnswer({ asked, result }: AnswerProps<'systematics'>)
       )}
       <p className="mt-3 max-w-[72ch] text-note">
         A row is one assumption that could be wrong, not an error bar of the limit: rows are never
-        added in quadrature.
+        added in quadrature. Only what the data rest on is varied here; indices, prior and
+        detections move the limit too, and are moved by the controls of the result.
       </p>
       {faulty.length > 0 && (
         <ul className="mt-3 grid gap-1">
