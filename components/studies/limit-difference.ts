@@ -15,5 +15,5 @@ export function limitDifference(limit: number, baseline: number, quantity: RateQ
 
 /** "1.11 times". */
 export function ratioInWords(ratio: number): string {
-  return `${formatSignificant(ratio, 3)} times`;
+  return `${ratio.toFixed(2)} times`;
 }

@@ -8,7 +8,7 @@ import { SectionOpener } from '@/components/ui/section-opener';
 import { SeriesKey } from '@/components/ui/series-key';
 import { describeLevel } from '@/lib/inference';
 import type { AnswerProps } from '../kind-entry';
-import { groupNames, halfInWords, isStrong } from './influence-words';
+import { countLeaving, groupNames, halfInWords, isStrong } from './influence-words';
 import { LeftOutTable } from './left-out-table';
 
 /** Each star against the limit without it; surveys and groups below. */
@@ -73,13 +73,22 @@ export function InfluenceAnswer({ asked, settings, result }: AnswerProps<'influe
       />
       <div className="mt-7 grid gap-x-12 gap-y-7 xl:grid-cols-2">
         <section className="min-w-0">
-          <SectionOpener title="Without a survey" level={3} />
+          <SectionOpener
+            title="Without a survey"
+            level={3}
+            context="stars that another survey saw stay"
+          />
           {result.surveys.length > 0 ? (
             <LeftOutTable
               {...rows}
               caption="Limit without each survey"
               head="survey"
-              rows={result.surveys.map(({ id, ...row }) => ({ key: id, ...row }))}
+              rows={result.surveys.map(({ id, stars: entries, ...row }) => ({
+                key: id,
+                ...row,
+                stars: countLeaving(inputs.stars, id),
+                entries,
+              }))}
             />
           ) : (
             <p className="text-ink2 text-note">

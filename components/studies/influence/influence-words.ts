@@ -22,3 +22,8 @@ export function halfInWords({ halfCarriedBy, stars }: ResultOf<'influence'>): st
   const count = halfCarriedBy === 1 ? '1 star carries' : `${halfCarriedBy} stars carry`;
   return `${count} half of the sensitivity, out of ${stars.length}.`;
 }
+
+/** Stars that leave with a survey: those that no other survey saw. */
+export function countLeaving(stars: readonly { surveys: string[] }[], surveyId: string): number {
+  return stars.filter(({ surveys }) => surveys.every((id) => id === surveyId)).length;
+}

@@ -11,7 +11,9 @@ interface LeftOutTableProps {
   rows: {
     key: string;
     name: string;
+    /** That leave, and of how many entries where some stay because others saw them. */
     stars: number;
+    entries?: number;
     without: { limit: number; ratio: number; exposure: number };
   }[];
   /** With all stars. */
@@ -28,19 +30,23 @@ export function LeftOutTable({ caption, head, rows, limit, ...words }: LeftOutTa
       <TableHead>
         <tr>
           <HeadCell>{head}</HeadCell>
-          <HeadCell isNumeric>stars</HeadCell>
+          <HeadCell isNumeric className="max-md:whitespace-normal">
+            stars that leave
+          </HeadCell>
           <HeadCell isNumeric className="max-md:whitespace-normal">
             limit without ({levelLabel})
           </HeadCell>
           <HeadCell isNumeric>difference</HeadCell>
-          <HeadCell isNumeric>ratio</HeadCell>
-          <HeadCell isNumeric className="max-md:whitespace-normal">
+          <HeadCell isNumeric className="max-md:hidden">
+            ratio
+          </HeadCell>
+          <HeadCell isNumeric className="max-md:hidden">
             stars’ worth left
           </HeadCell>
         </tr>
       </TableHead>
       <TableBody>
-        {rows.map(({ key, name, stars, without }) => (
+        {rows.map(({ key, name, stars, entries = stars, without }) => (
           <Row key={key}>
             <Cell isRowHead>
               {isStrong(without.ratio) ? (
@@ -52,13 +58,24 @@ export function LeftOutTable({ caption, head, rows, limit, ...words }: LeftOutTa
                 name
               )}
             </Cell>
-            <Cell isNumeric>{stars}</Cell>
-            <Cell isNumeric className="font-semibold text-bound">
-              {formatLimit(without.limit, quantity).replace(' per 100 stars', '')}
+            <Cell isNumeric>{entries === stars ? stars : `${stars} of ${entries}`}</Cell>
+            <Cell isNumeric className="max-md:whitespace-normal">
+              <span className="font-semibold text-bound">
+                {formatLimit(without.limit, quantity).replace(' per 100 stars', '')}
+              </span>
+              <span className="block text-chart text-ink3 md:hidden">
+                {ratioInWords(without.ratio)}, {formatPlain(without.exposure, 3)} stars’ worth left
+              </span>
             </Cell>
-            <Cell isNumeric>{limitDifference(without.limit, limit, quantity)}</Cell>
-            <Cell isNumeric>{ratioInWords(without.ratio)}</Cell>
-            <Cell isNumeric>{formatPlain(without.exposure, 3)}</Cell>
+            <Cell isNumeric className="max-md:whitespace-normal">
+              {limitDifference(without.limit, limit, quantity)}
+            </Cell>
+            <Cell isNumeric className="max-md:hidden">
+              {ratioInWords(without.ratio)}
+            </Cell>
+            <Cell isNumeric className="max-md:hidden">
+              {formatPlain(without.exposure, 3)}
+            </Cell>
           </Row>
         ))}
       </TableBody>

@@ -3,7 +3,11 @@ import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
 import { nearestPoint } from '@/components/charts/chart-readout';
 import { StarInfluenceChart } from '@/components/charts/star-influence-chart';
-import { halfInWords, isStrong } from '@/components/studies/influence/influence-words';
+import {
+  countLeaving,
+  halfInWords,
+  isStrong,
+} from '@/components/studies/influence/influence-words';
 import { LeftOutTable } from '@/components/studies/influence/left-out-table';
 import { buildInfluence } from './check-fixtures';
 
@@ -60,6 +64,11 @@ describe('what is left without some stars', () => {
     );
     expect(markup.match(/moves the limit by more than 20 per cent/g)).toHaveLength(1);
     expect(markup).toContain('+2.4 points');
+  });
+
+  it('counts only the stars that no other survey saw', () => {
+    const stars = [['a'], ['a', 'b'], ['b'], ['a']].map((surveys) => ({ surveys }));
+    expect(['a', 'b', 'c'].map((id) => countLeaving(stars, id))).toEqual([2, 1, 0]);
   });
 
   it('says in a sentence how many stars carry half', () => {
