@@ -46,7 +46,7 @@ interface Cell extends Box {
 const SIDES = 3;
 const foot = 44;
 const head = 26;
-const between = { columns: 14, rows: 26 };
+const between = { columns: 24, rows: 32 };
 const NARROW = 140;
 
 /** Marginals on the diagonal, joint densities with their 68 and 95 per cent areas below it. */

@@ -1,9 +1,9 @@
 import type { CornerParameter } from '@/components/charts/corner-chart';
 import type { JointPlane } from '@/components/charts/joint-contours';
-import { formatIndex } from '@/components/populations/law-notation';
 import { fromLogIndex, type IndexConvention } from '@/lib/population';
 import { formatRate, rateUnit } from '@/lib/quantities/display';
 import type { AnswerProps } from '../kind-entry';
+import { indexOfPosterior } from './free-indices-words';
 
 type Answer = AnswerProps<'free-indices'>;
 type Parameter = Answer['result']['massIndex'];
@@ -36,7 +36,7 @@ export function cornerParameters(
         </>
       ),
       fixed: fixed === undefined ? undefined : quote(fixed),
-      say: (value) => `${symbol} = ${formatIndex(Number(value.toPrecision(3)))}`,
+      say: (value) => `${symbol} = ${indexOfPosterior(value)}`,
     };
   };
   return [

@@ -16,3 +16,9 @@ export function freeAgainstFixed(free: number, fixed: number): string {
   const percent = Math.abs(100 * change).toFixed(Math.abs(change) < 0.1 ? 1 : 0);
   return `Letting the indices go ${change > 0 ? 'raises' : 'lowers'} the limit by ${percent}\u2009% of itself.`;
 }
+
+/** An index of the posterior: two decimals, a true minus sign, none before a zero. */
+export function indexOfPosterior(value: number): string {
+  const text = value.toFixed(2);
+  return Number(text) === 0 ? '0' : text.replace('-', '\u2212');
+}

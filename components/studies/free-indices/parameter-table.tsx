@@ -3,6 +3,7 @@ import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/u
 import { fromLogIndex, type IndexConvention } from '@/lib/population';
 import { formatSignificant } from '@/lib/quantities/display';
 import type { AnswerProps } from '../kind-entry';
+import { indexOfPosterior } from './free-indices-words';
 
 interface ParameterTableProps {
   result: AnswerProps<'free-indices'>['result'];
@@ -35,7 +36,8 @@ export function ParameterTable({ result, parameters, convention }: ParameterTabl
       </TableHead>
       <TableBody>
         {parameters.map((one, index) => {
-          const number = (value: number) => rounded(value, spreads[index]);
+          const number = (value: number) =>
+            one.key === 'rate' ? rounded(value, spreads[index]) : indexOfPosterior(value);
           const range = ([low, high]: [number, number]) => `${number(low)} to ${number(high)}`;
           return (
             <Row key={one.key}>
@@ -44,8 +46,12 @@ export function ParameterTable({ result, parameters, convention }: ParameterTabl
               </Cell>
               <Cell isNumeric>{number(means[index])}</Cell>
               <Cell isNumeric>{number(one.median)}</Cell>
-              <Cell isNumeric>{range(one.interval68)}</Cell>
-              <Cell isNumeric>{range(one.interval95)}</Cell>
+              <Cell isNumeric className="max-md:whitespace-normal">
+                {range(one.interval68)}
+              </Cell>
+              <Cell isNumeric className="max-md:whitespace-normal">
+                {range(one.interval95)}
+              </Cell>
             </Row>
           );
         })}
