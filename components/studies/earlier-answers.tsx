@@ -14,15 +14,17 @@ interface EarlierAnswersProps {
 /** All answers to one kind of question, newest first; a press shows another one. */
 export function EarlierAnswers({ studies, shownId, settingsInWords, onShow }: EarlierAnswersProps) {
   const day = useDay();
+  const askedBy = ({ createdBy, createdAt }: StudySummary) =>
+    `${createdBy ?? 'a former member'}, ${day(createdAt)}`;
   return (
     <Table caption="Questions of this kind that were asked, newest first">
       <TableHead>
         <tr>
           <HeadCell>question</HeadCell>
-          <HeadCell>settings</HeadCell>
+          <HeadCell className="max-md:hidden">settings</HeadCell>
           <HeadCell>answer</HeadCell>
-          <HeadCell>asked by</HeadCell>
-          <HeadCell>of</HeadCell>
+          <HeadCell className="max-md:hidden">asked by</HeadCell>
+          <HeadCell className="max-md:hidden">of</HeadCell>
         </tr>
       </TableHead>
       <TableBody>
@@ -38,14 +40,15 @@ export function EarlierAnswers({ studies, shownId, settingsInWords, onShow }: Ea
                 </TextAction>
               )}
             </Cell>
-            <Cell className="min-w-44">{settingsInWords(study)}</Cell>
-            <Cell className="min-w-56">
+            <Cell className="min-w-44 max-md:hidden">{settingsInWords(study)}</Cell>
+            <Cell className="md:min-w-56">
               <AnswerState study={study} />
+              <span className="block text-chart text-ink3 md:hidden">
+                {settingsInWords(study)}; {askedBy(study)}; of run {study.run.number}
+              </span>
             </Cell>
-            <Cell className="whitespace-nowrap">
-              {study.createdBy ?? 'a former member'}, {day(study.createdAt)}
-            </Cell>
-            <Cell className="whitespace-nowrap">run {study.run.number}</Cell>
+            <Cell className="whitespace-nowrap max-md:hidden">{askedBy(study)}</Cell>
+            <Cell className="whitespace-nowrap max-md:hidden">run {study.run.number}</Cell>
           </Row>
         ))}
       </TableBody>

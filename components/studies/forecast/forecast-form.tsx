@@ -93,7 +93,7 @@ function LikeThese({ form, surveys }: { form: Form; surveys: { id: string; name:
     form.set('planned.surveyIds', next.join());
   };
   return (
-    <div className="md:order-last flex w-full flex-wrap items-start gap-x-5 gap-y-3">
+    <div className="flex w-full flex-wrap items-start gap-x-5 gap-y-3">
       <div className="w-32 max-md:w-full">
         <NumberField {...form.field('planned.count')} label="Stars" step={1} />
       </div>
@@ -135,7 +135,7 @@ function TargetList({ form }: { form: Form }) {
     },
   });
   return (
-    <div className="md:order-last grid w-full min-w-0 grid-cols-[minmax(0,1fr)] gap-x-10 gap-y-5 xl:grid-cols-[minmax(0,1fr)_340px]">
+    <div className="grid w-full min-w-0 grid-cols-[minmax(0,1fr)] gap-x-10 gap-y-5 xl:grid-cols-[minmax(0,1fr)_340px]">
       <div className="min-w-0">
         <h3 className="mb-1 text-ink2 text-note">
           Targets. Cells of a spreadsheet may be pasted into a field, in the order of these columns.

@@ -80,26 +80,35 @@ function ForecastTable({
   studies: StudySummary[];
 }) {
   const day = useDay();
+  const askedBy = ({ createdBy, createdAt }: StudySummary) =>
+    `${createdBy ?? 'a former member'}, ${day(createdAt)}`;
   return (
     <Table caption="Forecasts, newest first">
       <TableHead>
         <tr>
           <HeadCell>forecast</HeadCell>
-          <HeadCell>planned</HeadCell>
-          <HeadCell>from</HeadCell>
+          <HeadCell className="max-md:hidden">planned</HeadCell>
+          <HeadCell className="max-md:hidden">from</HeadCell>
           <HeadCell>answer</HeadCell>
-          <HeadCell>asked by</HeadCell>
+          <HeadCell className="max-lg:hidden">asked by</HeadCell>
         </tr>
       </TableHead>
       <TableBody>
         {studies.map((study) =>
           study.settings.kind !== 'forecast' ? null : (
             <Row key={study.id}>
-              <Cell isRowHead className="min-w-36">
+              <Cell isRowHead className="min-w-36 max-md:align-top">
                 <Link href={`/${collaboration}/forecasts/${study.id}`}>{study.settings.name}</Link>
+                <span className="block font-normal text-chart text-ink3 lg:hidden">
+                  <span className="md:hidden">
+                    {plannedInWords(study.settings)}; from {study.run.analysisKey}, run{' '}
+                    {study.run.number};{' '}
+                  </span>
+                  {askedBy(study)}
+                </span>
               </Cell>
-              <Cell className="min-w-44">{plannedInWords(study.settings)}</Cell>
-              <Cell className="whitespace-nowrap">
+              <Cell className="min-w-44 max-md:hidden">{plannedInWords(study.settings)}</Cell>
+              <Cell className="whitespace-nowrap max-md:hidden">
                 <Link
                   className="underline underline-offset-3"
                   href={`/${collaboration}/analyses/${study.run.analysisKey}`}
@@ -108,12 +117,10 @@ function ForecastTable({
                 </Link>
                 , run {study.run.number}
               </Cell>
-              <Cell className="min-w-56">
+              <Cell className="max-md:align-top md:min-w-56">
                 <AnswerState study={study} />
               </Cell>
-              <Cell className="whitespace-nowrap">
-                {study.createdBy ?? 'a former member'}, {day(study.createdAt)}
-              </Cell>
+              <Cell className="whitespace-nowrap max-lg:hidden">{askedBy(study)}</Cell>
             </Row>
           ),
         )}

@@ -5,8 +5,8 @@ import { ProbabilityBar } from '@/components/charts/probability-bar';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import { TextAction } from '@/components/ui/text-action';
 import {
+  formatLimit,
   formatPercent,
-  formatRate,
   formatSignificant,
   type RateQuantity,
 } from '@/lib/quantities/display';
@@ -21,8 +21,6 @@ interface GainTableProps {
 }
 
 const FIRST = 20;
-/** One star moves a limit little: two digits would all read the same. */
-const DIGITS = 4;
 
 /** Which stars next: those that would lower the limit most, each added alone. */
 export function GainTable({ gain, limitNow, quantity, levelLabel }: GainTableProps) {
@@ -63,10 +61,7 @@ export function GainTable({ gain, limitNow, quantity, levelLabel }: GainTablePro
                   {formatPercent(probability)}
                 </Cell>
                 <Cell isNumeric className="text-bound">
-                  {`<${formatRate(limitWithItAlone, quantity, DIGITS)}`.replace(
-                    ' per 100 stars',
-                    '',
-                  )}
+                  {formatLimit(limitWithItAlone, quantity).replace(' per 100 stars', '')}
                 </Cell>
                 <Cell isNumeric>
                   {formatSignificant(100 * Math.max(0, limitNow - limitWithItAlone), 2)}

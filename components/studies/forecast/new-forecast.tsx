@@ -15,7 +15,6 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SelectField } from '@/components/ui/select-field';
-import { StateMark } from '@/components/ui/state-mark';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
@@ -74,11 +73,7 @@ export function NewForecast(props: NewForecastProps) {
     <>
       <PageTitle
         title="New forecast"
-        crumbs={[
-          { href: `/${collaboration}/forecasts`, label: 'Forecasts' },
-          { label: 'new forecast' },
-        ]}
-        state={<StateMark kind="draft">Forecast</StateMark>}
+        crumbs={[{ href: `/${collaboration}/forecasts`, label: 'Forecasts' }]}
         context="What would more stars or deeper images add?"
       />
       {bases.length === 0 ? (

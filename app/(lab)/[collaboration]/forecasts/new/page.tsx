@@ -6,6 +6,8 @@ import type { Actor } from '@/lib/access/actor';
 import { may } from '@/lib/access/permissions';
 import { NotFound } from '@/lib/errors';
 import { listAnalyses } from '@/lib/services/analyses';
+import { leadOf } from '@/lib/services/lead-analysis';
+import { getSettings } from '@/lib/services/settings';
 import { getStudy } from '@/lib/services/studies';
 
 export const metadata: Metadata = { title: 'New forecast' };
@@ -19,14 +21,16 @@ export default async function NewForecastPage({
 }) {
   const actor = await currentActor((await params).collaboration);
   const { analysis, from } = await searchParams;
-  const [{ analyses }, earlier] = await Promise.all([
+  const [{ analyses }, { leadAnalysis }, earlier] = await Promise.all([
     listAnalyses(actor),
+    getSettings(actor),
     from === undefined ? null : findForecast(actor, from),
   ]);
   const canAsk = may(actor, 'run-analysis', { isOwn: true });
   const bases = analyses.filter(({ runs }) => runs.some(isFinished));
   const wanted = earlier?.run.analysisKey ?? analysis;
-  const base = bases.find(({ key }) => key === wanted) ?? bases[0];
+  const lead = bases.find(({ key }) => key === leadAnalysis) ?? leadOf(bases, {});
+  const base = bases.find(({ key }) => key === wanted) ?? lead ?? bases[0];
   const { run = null, runPopulation = null } = base ? await newestRunOf(actor, base) : {};
   return (
     <NewForecast
