@@ -45,7 +45,7 @@ export function YieldChart(props: YieldChartProps) {
       height={height}
       measure={measure}
       tables={() => [yieldTable(props)]}
-      caption={`darker: central 68 %, ${interval68[0]} to ${interval68[1]} detections`}
+      caption={`fuller: central 68 %, ${interval68[0]} to ${interval68[1]} detections`}
       overlay={
         <ChartReadout
           frame={frame}

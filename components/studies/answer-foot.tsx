@@ -98,7 +98,7 @@ export function AnswerProvenance({ collaboration, study, onDeleted }: AnswerProv
     <section>
       <SectionOpener
         title="Provenance"
-        context="everything this answer was made from, unchanged since"
+        context="everything this answer was made from, none of it changed since it was computed"
       />
       <ProvenanceChain steps={steps} />
       <details className="mt-4 text-note">
@@ -113,7 +113,7 @@ export function AnswerProvenance({ collaboration, study, onDeleted }: AnswerProv
         </dl>
       </details>
       {study.can.remove && (
-        <div className="mt-4">
+        <div className="mt-4 [&>button]:-ml-2">
           <DeleteForGood
             label="Delete this answer"
             warning="The answer goes for good, with every map that it keeps; the run stays."

@@ -29,7 +29,7 @@ export function SettingsFrame(props: SettingsFrameProps) {
     >
       <div className="flex flex-wrap items-end gap-x-5 gap-y-3">
         {children}
-        <div className="ml-auto max-md:ml-0 max-md:w-full">
+        <div className="max-md:w-full">
           <Button
             type="submit"
             variant="primary"

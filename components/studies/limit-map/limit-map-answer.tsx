@@ -47,7 +47,7 @@ export function LimitMapAnswer({ asked, result }: AnswerProps<'limit-map'>) {
           {isTail
             ? 'Limit for the population cut to companions at least as heavy and as wide as each place.'
             : 'Limit if all companions were at one place and none had been detected.'}{' '}
-          Deeper: stronger. Hatched: set by the prior.
+          Fuller colour: stronger. Hatched: set by the prior.
         </p>
         <ConsequenceSwitch<View>
           label="Companions"

@@ -65,19 +65,28 @@ function SharedStars({ shared }: { shared: AnswerProps<'overlap-rules'>['result'
         <TableHead>
           <tr>
             <HeadCell>star</HeadCell>
-            <HeadCell>surveys</HeadCell>
-            <HeadCell isNumeric>same position, %</HeadCell>
-            <HeadCell isNumeric>deepest, %</HeadCell>
-            <HeadCell isNumeric>independent, %</HeadCell>
+            <HeadCell className="max-md:hidden">surveys</HeadCell>
+            <HeadCell isNumeric className="max-md:whitespace-normal">
+              same position, %
+            </HeadCell>
+            <HeadCell isNumeric className="max-md:whitespace-normal">
+              deepest, %
+            </HeadCell>
+            <HeadCell isNumeric className="max-md:whitespace-normal">
+              independent, %
+            </HeadCell>
           </tr>
         </TableHead>
         <TableBody>
           {shared.map((star) => (
             <Row key={star.starId}>
-              <Cell isRowHead className="whitespace-nowrap">
+              <Cell isRowHead className="md:whitespace-nowrap">
                 {star.name}
+                <span className="block font-normal text-chart text-ink3 md:hidden">
+                  {star.surveys.join(', ')}
+                </span>
               </Cell>
-              <Cell>{star.surveys.join(', ')}</Cell>
+              <Cell className="max-md:hidden">{star.surveys.join(', ')}</Cell>
               <Cell isNumeric>{percent(star.probability.samePosition)}</Cell>
               <Cell isNumeric>{percent(star.probability.deepest)}</Cell>
               <Cell isNumeric>{percent(star.probability.independent)}</Cell>

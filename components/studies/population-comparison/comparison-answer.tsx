@@ -5,6 +5,7 @@ import { FormulaWords } from '@/components/ui/formula-words';
 import { Link } from '@/components/ui/link';
 import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
+import { describeLevel } from '@/lib/inference';
 import { formatPlain, formatSignificant } from '@/lib/quantities/display';
 import { AnswerNotes } from '../answer-notes';
 import type { AnswerProps } from '../kind-entry';
@@ -13,6 +14,7 @@ import { evidenceInWords, evidenceSource, evidenceSteps } from './comparison-wor
 /** Which population the data speak for, with its evidence, its limit and why one has none. */
 export function ComparisonAnswer({ asked, result }: AnswerProps<'population-comparison'>) {
   const { rows } = result;
+  const level = describeLevel(asked.credibleLevel);
   const unit = asked.quantity === 'host_fraction' ? '%' : 'per 100 stars';
   return (
     <>
@@ -34,16 +36,22 @@ export function ComparisonAnswer({ asked, result }: AnswerProps<'population-comp
               <HeadCell isNumeric>
                 ln <i>B</i>
               </HeadCell>
-              <HeadCell>which says</HeadCell>
-              <HeadCell isNumeric>limit, {unit}</HeadCell>
-              <HeadCell isNumeric>sum over stars</HeadCell>
-              <HeadCell isNumeric>detections</HeadCell>
+              <HeadCell className="max-md:hidden">which says</HeadCell>
+              <HeadCell isNumeric className="max-md:whitespace-normal">
+                limit ({level}), {unit}
+              </HeadCell>
+              <HeadCell isNumeric className="max-md:hidden">
+                stars’ worth of sensitivity
+              </HeadCell>
+              <HeadCell isNumeric className="max-md:hidden">
+                detections
+              </HeadCell>
             </tr>
           </TableHead>
           <TableBody>
             {rows.map((row) => (
               <Row key={row.populationId} isSelected={row.isOwn}>
-                <Cell isRowHead className="min-w-60">
+                <Cell isRowHead className="md:min-w-60">
                   <Link href={`/${asked.collaboration}/populations/${row.key}`}>
                     {row.key} {row.name}
                   </Link>
@@ -51,18 +59,27 @@ export function ComparisonAnswer({ asked, result }: AnswerProps<'population-comp
                   <span className="block font-normal text-chart text-ink3">
                     <FormulaWords text={row.words} />
                   </span>
+                  <span className="block font-normal text-chart md:hidden">{saysOf(row)}</span>
                 </Cell>
                 <Cell isNumeric>
                   {row.logBayesFactor === null ? '–' : formatLogB(row.logBayesFactor)}
                 </Cell>
-                <Cell className="min-w-44">{saysOf(row)}</Cell>
-                <Cell isNumeric className={row.limit === null ? '' : 'limit'}>
-                  {row.limit === null ? '–' : `<${formatSignificant(100 * row.limit, 2)}`}
+                <Cell className="min-w-44 max-md:hidden">{saysOf(row)}</Cell>
+                <Cell isNumeric className="max-md:whitespace-normal">
+                  <span className={row.limit === null ? '' : 'limit'}>
+                    {row.limit === null ? '–' : `<${formatSignificant(100 * row.limit, 2)}`}
+                  </span>
+                  {row.exposure !== null && row.detections !== null && (
+                    <span className="block text-chart text-ink3 md:hidden">
+                      {formatSignificant(row.exposure, 3)} stars’ worth, detections{' '}
+                      {formatPlain(row.detections, 3)}
+                    </span>
+                  )}
                 </Cell>
-                <Cell isNumeric>
+                <Cell isNumeric className="max-md:hidden">
                   {row.exposure === null ? '–' : formatSignificant(row.exposure, 3)}
                 </Cell>
-                <Cell isNumeric>
+                <Cell isNumeric className="max-md:hidden">
                   {row.detections === null ? '–' : formatPlain(row.detections, 3)}
                 </Cell>
               </Row>
