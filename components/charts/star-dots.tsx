@@ -98,7 +98,7 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
   return (
     <ChartFigure
       name="stars"
-      label={`Detection probability of ${stars.length} stars: ${half.stars} of them, from ${formatPercent(half.probability)} up, carry half of the sum`}
+      label={`Detection probability of ${stars.length} stars: ${half.stars} of them, from ${formatPercent(half.probability)} up, carry half of the sensitivity`}
       width={width}
       height={height}
       measure={measure}
@@ -128,7 +128,7 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
         className="bold page-halo"
         x={x(half.probability) - 9 - radius}
         y={18}
-        textAnchor={x(half.probability) > 140 ? 'end' : 'start'}
+        textAnchor={x(half.probability) > 180 ? 'end' : 'start'}
       >
         {half.stars} stars to the right
       </text>
@@ -136,9 +136,9 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
         className="page-halo"
         x={x(half.probability) - 9 - radius}
         y={35}
-        textAnchor={x(half.probability) > 140 ? 'end' : 'start'}
+        textAnchor={x(half.probability) > 180 ? 'end' : 'start'}
       >
-        carry half of the sum
+        carry half of the sensitivity
       </text>
       {dots.map(({ colour, path }) => (
         <path key={colour} className="star-dot" d={path} style={{ fill: colour }} />
