@@ -184,7 +184,7 @@ function HalfLine({ x, stars, frame }: { x: number; stars: number; frame: Box })
         {first}
       </text>
       <text className="page-halo" {...words} y={frame.top + 31}>
-        {stars === 1 ? 'carries' : 'carry'} half of the sum
+        {stars === 1 ? 'carries' : 'carry'} half of the sensitivity
       </text>
     </g>
   );
@@ -224,7 +224,7 @@ function influenceSentence(props: StarInfluenceChartProps): string {
   const most = [...stars].sort((a, b) => Math.abs(Math.log(b.ratio)) - Math.abs(Math.log(a.ratio)));
   const parts = [
     `Detection probability of ${stars.length} stars against the upper limit (${levelLabel}) without each; with all, ${spokenLimit(limit, quantity)}`,
-    `${halfCarriedBy} of them carry half of the sum`,
+    `${halfCarriedBy} of them carry half of the sensitivity`,
   ];
   if (most.length > 0) {
     parts.push(

@@ -1,4 +1,3 @@
-import { quotedValue } from '@/lib/inference/sweep-parameters';
 import {
   describeLevel,
   describeSweepValue,
