@@ -2,9 +2,9 @@ import type { MapData } from '@/components/charts/map-contours';
 import type { LiveSample } from '@/components/runs/live-sample';
 import { orNull } from '@/components/runs/or-null';
 import { type Answer, answerFromView, type PopulationView, viewPopulation } from '@/lib/inference';
-import { type Population, type PopulationWeights, requireHostMasses } from '@/lib/population';
+import { type Population, requireHostMasses } from '@/lib/population';
 import type { PreviewSetting } from './builder-setting';
-import { interpolateMap } from './interpolate-map';
+import { HARDLY_ANY, shareHardlySeen } from './hardly-seen';
 import {
   definitionOf,
   type LawDefinition,
@@ -13,36 +13,6 @@ import {
   withParameter,
 } from './law-parts';
 import { hostMassesOf, spreadOf } from './spread';
-
-/** Below this mean detection probability a limit rests on the population and not on data. */
-export const HARDLY_SEEN = 0.05;
-/** Share of the population where the mean detection probability is under 5 %, outside included. */
-export function shareHardlySeen(
-  map: MapData,
-  population: Population,
-  weights: PopulationWeights,
-): number {
-  if (population.form === 'systems') {
-    let [hardly, whole] = [0, 0];
-    population.companionSystem.forEach((system, k) => {
-      const own = population.weight[system];
-      whole += own;
-      const seen = interpolateMap(map, population.massMjup[k], population.semiMajorAxisAu[k]);
-      if (seen < HARDLY_SEEN) hardly += own;
-    });
-    return hardly / whole;
-  }
-  const columns = map.semiMajorAxisAu.length;
-  let share = weights.shareOutsideMap;
-  weights.mass.forEach((mass, row) => {
-    for (let column = 0; column < columns; column++) {
-      if (map.completeness[row * columns + column] < HARDLY_SEEN) {
-        share += mass * weights.semiMajorAxis[column];
-      }
-    }
-  });
-  return Math.min(1, share);
-}
 
 export interface PreviewAnswer {
   view: PopulationView;
@@ -128,7 +98,7 @@ export function betterStart(
     const spread = orNull(() => spreadOf(sample, meanMap, moved));
     if (spread === null) continue;
     const share = shareHardlySeen(spread.map, moved, spread.weights);
-    if (share < 0.01) return { start, isRatio: parts.isRatio, definition: moved, share };
+    if (share < HARDLY_ANY) return { start, isRatio: parts.isRatio, definition: moved, share };
   }
   return null;
 }

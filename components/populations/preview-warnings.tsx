@@ -7,8 +7,9 @@ import { TextAction } from '@/components/ui/text-action';
 import { type Population, populationWarnings } from '@/lib/population';
 import { formatLimit, formatPercent } from '@/lib/quantities/display';
 import type { PreviewSetting } from './builder-setting';
+import { HARDLY_ANY, hardlySeenWords, shareHardlySeen } from './hardly-seen';
 import type { LawDefinition } from './law-parts';
-import { betterStart, HARDLY_SEEN, previewAnswer, shareHardlySeen } from './preview-figures';
+import { betterStart, previewAnswer } from './preview-figures';
 import type { Spread } from './spread';
 import type { Preview } from './use-preview';
 
@@ -26,9 +27,10 @@ export function PreviewWarnings(props: PreviewWarningsProps) {
   const { sample, map } = preview;
   const { prior, credibleLevel } = setting;
   const share = shareHardlySeen(spread.map, population, spread.weights);
+  const words = hardlySeenWords(share);
   const outside = spread.weights.shareOutsideMap;
   const better = useMemo(() => {
-    if (share < 0.01 || population.form === 'systems') return null;
+    if (share < HARDLY_ANY || population.form === 'systems') return null;
     const start = betterStart(sample, map, population);
     if (!start) return null;
     const asked = { definition: start.definition, prior, credibleLevel };
@@ -65,10 +67,10 @@ export function PreviewWarnings(props: PreviewWarningsProps) {
           Nothing counts as seen there. A run is refused until its analysis says that this is meant.
         </Notice>
       )}
-      {share >= 0.01 && (
+      {share >= HARDLY_ANY && (
         <Notice
           tone="warn"
-          title={`${formatPercent(share)} of this population lies where the mean detection probability is under ${formatPercent(HARDLY_SEEN, 1)}.`}
+          title={`${words.fact}.`}
           actions={
             better &&
             onDefinition && (
@@ -78,7 +80,7 @@ export function PreviewWarnings(props: PreviewWarningsProps) {
             )
           }
         >
-          There the limit rests on the population, not on data.
+          {words.meaning}.
           {better && (
             <>
               {' '}

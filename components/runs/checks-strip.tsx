@@ -1,11 +1,17 @@
-import { memo, type ReactNode } from 'react';
+import { memo, type ReactNode, useMemo } from 'react';
+import type { MapData } from '@/components/charts/map-contours';
+import { HARDLY_ANY, hardlySeenWords, shareOnMeanMap } from '@/components/populations/hardly-seen';
 import { StateMark } from '@/components/ui/state-mark';
 import { describeCandidates, type StatedCandidates } from '@/lib/inference';
 import { formatPercent } from '@/lib/quantities/display';
+import type { ListedDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs } from '@/lib/schemas/runs';
 
 interface ChecksStripProps {
   inputs: DrawnInputs;
+  /** The mean map of the stars, and the population whose share out of sight on it is named. */
+  map: MapData;
+  definition: ListedDefinition;
   shareOutsideMaps: number;
   shareFlaggedCooling: number;
   /** Candidates without an answer that may lie in the ranges now, and what is done with them. */
@@ -18,8 +24,11 @@ interface ChecksStripProps {
 
 /** What a reader should know before the number is used, in one line. */
 export const ChecksStrip = memo(function ChecksStrip(props: ChecksStripProps) {
-  const { inputs, shareOutsideMaps, shareFlaggedCooling, candidates, ofRun } = props;
+  const { inputs, map, definition, shareOutsideMaps, shareFlaggedCooling, candidates, ofRun } =
+    props;
   const inRun = ofRun === undefined ? '' : `, run ${ofRun}`;
+  const hardlySeen = useMemo(() => shareOnMeanMap(map, definition), [map, definition]);
+  const words = hardlySeenWords(hardlySeen ?? 0);
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
   const overlapping = entries - inputs.stars.length;
   return (
@@ -44,6 +53,11 @@ export const ChecksStrip = memo(function ChecksStrip(props: ChecksStripProps) {
         </StateMark>
       ) : (
         <StateMark kind="ok">The whole population lies inside the maps</StateMark>
+      )}
+      {hardlySeen !== null && hardlySeen >= HARDLY_ANY && (
+        <StateMark kind="warn">
+          {words.fact}. {words.meaning}.
+        </StateMark>
       )}
       {shareFlaggedCooling > 0.0005 && (
         <StateMark kind="warn">

@@ -25,7 +25,6 @@ import { countsAnything, describeLevel } from '@/lib/inference';
 import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
-import { ChecksStrip } from './checks-strip';
 import type { LiveSample } from './live-sample';
 import { type LiveSetting, quantityOf } from './live-setting';
 import { posteriorData } from './posterior-data';
@@ -44,6 +43,7 @@ import type { RunSource } from './use-run-source';
 const PosteriorChart = dynamic(
   async () => (await import('@/components/charts/posterior-chart')).PosteriorChart,
 );
+const ChecksStrip = dynamic(async () => (await import('./checks-strip')).ChecksStrip);
 const ResultConsole = dynamic(async () => (await import('./result-console')).ResultConsole);
 const CalibrationCheck = dynamic(
   async () => (await import('@/components/studies/calibration/calibration-check')).CalibrationCheck,
@@ -186,6 +186,8 @@ export function ResultBody(props: ResultBodyProps) {
       </div>
       <ChecksStrip
         inputs={inputs}
+        map={map}
+        definition={settled.setting.definition}
         shareOutsideMaps={shown.shareOutsideMaps}
         shareFlaggedCooling={result.shareFlaggedCooling}
         candidates={shown.candidates}

@@ -19,6 +19,7 @@ import { isFinished, isOnItsWay } from './run-standing';
 import { storedCandidates } from './shown-result';
 import { StoredPlate } from './stored-plate';
 import { StoredSections } from './stored-sections';
+import { useStoredMap } from './use-map-figures';
 
 interface StoredResultProps {
   collaboration: string;
@@ -81,6 +82,7 @@ interface StoredBodyProps {
 }
 
 function StoredBody({ collaboration, run, definition, inputs, result }: StoredBodyProps) {
+  const { map } = useStoredMap(result, inputs);
   return (
     <FigureFrame collaboration={collaboration} {...recordedFigures(run, inputs, result)}>
       <StoredPlate {...{ collaboration, run, definition, inputs, result }} />
@@ -92,6 +94,8 @@ function StoredBody({ collaboration, run, definition, inputs, result }: StoredBo
       </div>
       <ChecksStrip
         inputs={inputs}
+        map={map}
+        definition={definition}
         shareOutsideMaps={result.shareOutsideMaps}
         shareFlaggedCooling={result.shareFlaggedCooling}
         candidates={storedCandidates(inputs, result)}

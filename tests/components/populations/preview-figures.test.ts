@@ -1,5 +1,10 @@
 import { describe, expect, it } from 'vitest';
 import { drawSeen, PLANETS } from '@/components/populations/draw-seen';
+import {
+  hardlySeenWords,
+  shareHardlySeen,
+  shareOnMeanMap,
+} from '@/components/populations/hardly-seen';
 import { interpolateMap } from '@/components/populations/interpolate-map';
 import { limitPlane } from '@/components/populations/limit-plane';
 import {
@@ -7,7 +12,6 @@ import {
   faultOnSample,
   parameterTrace,
   previewAnswer,
-  shareHardlySeen,
 } from '@/components/populations/preview-figures';
 import { spreadOf } from '@/components/populations/spread';
 import {
@@ -59,6 +63,17 @@ describe('what hardly anybody sees', () => {
   it('is a larger share the lower the masses begin', () => {
     const share = (of: typeof definition) => shareHardlySeen(map, of, populationWeights(map, of));
     expect(share(low)).toBeGreaterThan(share(definition));
+  });
+
+  it('is told of a result from its mean map in the words of the preview, if that map suffices', () => {
+    const share = shareOnMeanMap(map, low);
+    expect(share).toBe(shareHardlySeen(map, low, populationWeights(map, low)));
+    expect(hardlySeenWords(share ?? 0).fact).toContain(
+      'mean detection probability is under 5\u2009%',
+    );
+    const hostScaling = { index: 1, referenceMsun: 1 };
+    expect(shareOnMeanMap(map, { ...low, hostScaling })).toBeNull();
+    expect(shareOnMeanMap(map, { ...low, massMinMjup: 1e4, massMaxMjup: 2e4 })).toBeNull();
   });
 
   it('betterStart begins where the share is under 1 %', () => {
