@@ -1,7 +1,7 @@
-import { formatInterval, formatLimit, formatPercent, formatRate } from '@/lib/quantities/display';
+import { formatInterval, formatPercent, formatRate } from '@/lib/quantities/display';
 import { valueAt } from './paths';
 import { lastCrossing } from './posterior-layout';
-import { limitWithLevel, type PosteriorData } from './posterior-words';
+import { limitWithLevel, type PosteriorData, savedWords } from './posterior-words';
 import { textWidth } from './text-width';
 
 interface PosteriorLabelsProps {
@@ -58,9 +58,14 @@ function AlternativeName({ data, frame, x, y, isNarrow }: PosteriorLabelsProps) 
 function SavedLimit({ data, frame, x, y }: PosteriorLabelsProps) {
   const { saved, curve, quantity } = data;
   if (!saved) return null;
-  const words = `saved ${formatLimit(saved.limit, quantity)}`;
   const at = x(saved.limit);
   const goesLeft = saved.limit <= data.limit;
+  const room = (goesLeft ? at - frame.left : frame.right - at) - 6;
+  const whole = savedWords(saved, quantity);
+  const words =
+    textWidth(whole, 13) <= room
+      ? whole
+      : savedWords({ ...saved, hasOtherSettings: false }, quantity);
   // Words to the left of the bar must clear the falling curve under their far end.
   const farEnd = goesLeft ? saved.limit * (1 - (textWidth(words, 13) + 6) / at) : saved.limit;
   const row = Math.min(

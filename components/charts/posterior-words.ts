@@ -38,8 +38,12 @@ export interface PosteriorData {
   };
   /** The same question with zero detections: dashed. */
   alternative?: OtherPosterior;
-  /** The stored state while a control is moved: dotted. */
-  saved?: Omit<OtherPosterior, 'label'>;
+  /** The stored state while a control is moved: dotted, with the level that its own limit has. */
+  saved?: Omit<OtherPosterior, 'label'> & {
+    credibleLevel: number;
+    /** Ranges, prior or anything else beside the level differ. */
+    hasOtherSettings: boolean;
+  };
   /** A second analysis on the same axis, with its own limit outlined. */
   second?: OtherPosterior & { name: string };
   /** Name of the first where there are two: "A". */
@@ -63,6 +67,12 @@ export function limitWithLevel(limit: number, level: number, quantity: RateQuant
   return `${words} (${formatLevel(level)})`;
 }
 
+/** "saved <5.8 % (95 %), other settings". */
+export function savedWords(saved: NonNullable<PosteriorData['saved']>, quantity: RateQuantity) {
+  const words = `saved ${limitWithLevel(saved.limit, saved.credibleLevel, quantity)}`;
+  return saved.hasOtherSettings ? `${words}, other settings` : words;
+}
+
 /** The chart in one sentence. */
 export function posteriorSentence(data: PosteriorData): string {
   const { quantity, credibleLevel } = data;
@@ -76,7 +86,7 @@ export function posteriorSentence(data: PosteriorData): string {
       `${data.alternative.label}: ${limitWithLevel(data.alternative.limit, credibleLevel, quantity)}`,
     data.second &&
       `${data.second.name}, ${data.second.label}: ${limitWithLevel(data.second.limit, credibleLevel, quantity)}`,
-    data.saved && `saved: ${limitWithLevel(data.saved.limit, credibleLevel, quantity)}`,
+    data.saved && savedWords(data.saved, quantity),
     data.prior && `prior: ${data.prior.label}`,
   ].filter(Boolean);
   const head = `Posterior of the ${quantityWords(quantity)}${data.name ? `, ${data.name}` : ''}`;
@@ -88,8 +98,8 @@ const readAt = 20;
 /** The summary, then the curve at even steps. */
 export function posteriorTables(data: PosteriorData): ChartTable[] {
   const { quantity, credibleLevel, curve } = data;
-  const limitRow = (name: string, limit: number) => [
-    `${name} (${formatLevel(credibleLevel)})`,
+  const limitRow = (name: string, limit: number, level = credibleLevel) => [
+    `${name} (${formatLevel(level)})`,
     formatLimit(limit, quantity),
   ];
   const summary = [
@@ -98,7 +108,7 @@ export function posteriorTables(data: PosteriorData): ChartTable[] {
     limitRow(data.name ? `upper limit of ${data.name}` : 'upper limit', data.limit),
     data.alternative && limitRow(data.alternative.label, data.alternative.limit),
     data.second && limitRow(`upper limit of ${data.second.name}`, data.second.limit),
-    data.saved && limitRow('saved upper limit', data.saved.limit),
+    data.saved && limitRow('saved upper limit', data.saved.limit, data.saved.credibleLevel),
     data.prior && ['prior', data.prior.label],
   ].filter((row) => row !== undefined);
   const max = curve.rate[curve.rate.length - 1];

@@ -10,7 +10,10 @@ interface PosteriorInputs {
   quantity: RateQuantity;
   answer: LimitAnswer;
   zero?: LimitAnswer;
-  saved?: LimitAnswer;
+  saved?: { answer: LimitAnswer } & Pick<
+    NonNullable<PosteriorData['saved']>,
+    'credibleLevel' | 'hasOtherSettings'
+  >;
   /** Something was counted: of none only the limit is quoted, and no band is drawn. */
   hasInterval: boolean;
 }
@@ -20,7 +23,7 @@ export function posteriorData(inputs: PosteriorInputs): PosteriorData {
   const { setting, quantity, answer, zero, saved, hasInterval } = inputs;
   const largest = quantity === 'host_fraction' ? 1 : Number.POSITIVE_INFINITY;
   const top = rateAxisMax(
-    [answer, zero, saved].flatMap((one) => (one === undefined ? [] : [one.limit])),
+    [answer, zero, saved?.answer].flatMap((one) => (one === undefined ? [] : [one.limit])),
     largest,
   );
   const shown = reachTo(answer.curve, top);
@@ -45,8 +48,12 @@ export function posteriorData(inputs: PosteriorInputs): PosteriorData {
             curve: reachTo(zero.curve, top),
             limit: zero.limit,
           },
-    saved:
-      saved === undefined ? undefined : { curve: reachTo(saved.curve, top), limit: saved.limit },
+    saved: saved && {
+      curve: reachTo(saved.answer.curve, top),
+      limit: saved.answer.limit,
+      credibleLevel: saved.credibleLevel,
+      hasOtherSettings: saved.hasOtherSettings,
+    },
   };
 }
 

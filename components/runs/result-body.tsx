@@ -316,7 +316,7 @@ const ResultPlate = memo(function ResultPlate({
           answer: shown.answer,
           zero: shown.counted.length > 0 ? shown.zero : undefined,
           hasInterval: countsAnything(shown.counted, shown.candidates),
-          saved: isLive && !isOfRun && saved.quantity === quantity ? saved.answer : undefined,
+          saved: isLive && !isOfRun && saved.quantity === quantity ? saved : undefined,
         })}
         view={view}
         onViewChange={setView}

@@ -34,7 +34,13 @@ export interface ShownResult {
   shareOutsideMaps: number;
   /** Shape [star]; undefined until the maps are there. */
   view: LiveOutcome['view'];
-  saved: { answer: LimitAnswer; quantity: RateQuantity };
+  saved: {
+    answer: LimitAnswer;
+    quantity: RateQuantity;
+    credibleLevel: number;
+    /** More than the level differs from what is shown. */
+    hasOtherSettings: boolean;
+  };
   /** The present setting is not the run's. */
   isLive: boolean;
   /** The present setting has no answer of its own (yet): the run's stands in its place. */
@@ -49,7 +55,15 @@ export function showResult(
   outcome: LiveOutcome | undefined,
   models?: AgesCoolingAnswer['result']['models'],
 ): ShownResult {
-  const saved = { answer: savedAnswer(result.answer), quantity: quantityOf(inRun.likelihood) };
+  const { credibleLevel } = inRun;
+  const saved = {
+    ...{
+      answer: savedAnswer(result.answer),
+      quantity: quantityOf(inRun.likelihood),
+      credibleLevel,
+    },
+    hasOtherSettings: !isSameSetting({ ...setting, credibleLevel }, inRun),
+  };
   const isLive = !isSameSetting(setting, inRun);
   const live = outcome?.live;
   if (!live) {
