@@ -5,6 +5,7 @@ import { countOf } from '@/components/runs/level-table';
 import { savedAnswer } from '@/components/runs/limit-answer';
 import { reachTo } from '@/components/runs/posterior-data';
 import { RecordedStatementCopy } from '@/components/statement/statement-copy';
+import { Icon } from '@/components/ui/icon';
 import { Link } from '@/components/ui/link';
 import { Plate, StatementNumber } from '@/components/ui/plate';
 import { describeLevel } from '@/lib/inference';
@@ -56,9 +57,12 @@ export function ComparePlate({ collaboration, sides, inputs }: ComparePlateProps
           quantity={sides[0].result.quantity}
         />
         {left.length > 0 && (
-          <p className="mt-2 text-note text-warn">
-            {left.join(', ')} {left.length === 1 ? 'answers' : 'answer'} for another quantity and{' '}
-            {left.length === 1 ? 'has' : 'have'} no place on this axis.
+          <p className="mt-2 flex items-center gap-1.5 font-semibold text-ink text-note">
+            <Icon name="warn" size={14} />
+            <span>
+              {left.join(', ')} {left.length === 1 ? 'answers' : 'answer'} for another quantity and{' '}
+              {left.length === 1 ? 'has' : 'have'} no place on this axis.
+            </span>
           </p>
         )}
       </div>
