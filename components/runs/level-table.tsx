@@ -14,6 +14,9 @@ interface LevelTableProps {
   copyOf?(level: number, limit: number): React.ReactNode;
 }
 
+/** Two numbers that stand nearest each other must belong together: each group begins at a line. */
+const groupEdge = 'border-rule border-l sm:pl-5';
+
 /** Limits by level, with and without detections, for the fraction of hosts and the mean number. */
 export function LevelTable({
   levels,
@@ -26,28 +29,43 @@ export function LevelTable({
   const isChosen = (level: number) => Math.abs(level - credibleLevel) < 1e-9;
   const bound = (chosen: boolean, column: RateQuantity) =>
     chosen && column === quantity ? 'limit' : '';
+  // Candidates may count without a detection; where nothing counts, both groups are the same.
+  const isZeroAlone =
+    detections === 0 &&
+    levels.every(
+      (row) => row.hostFraction === row.hostFractionZero && row.meanNumber === row.meanNumberZero,
+    );
+  const zero = 'zero detections';
+  const groups = isZeroAlone ? [zero] : [countOf(detections), zero];
   return (
     <>
-      <Table caption={`Upper limits by credible level, with ${countOf(detections)} and with none`}>
+      <Table
+        caption={`Upper limits by credible level, with ${isZeroAlone ? zero : `${countOf(detections)} and with none`}`}
+      >
         <TableHead>
           <tr>
             <HeadCell scope="col" aria-hidden="true" className="border-b-0" />
-            <HeadCell scope="colgroup" colSpan={2} className="border-b-rule text-center">
-              {countOf(detections)}
-            </HeadCell>
-            <HeadCell scope="colgroup" colSpan={2} className="border-b-rule text-center">
-              zero detections
-            </HeadCell>
+            {groups.map((group) => (
+              <HeadCell
+                key={group}
+                scope="colgroup"
+                colSpan={2}
+                className={`border-b-rule text-center ${groupEdge}`}
+              >
+                {group}
+              </HeadCell>
+            ))}
             {copyOf && <HeadCell scope="col" aria-hidden="true" className="border-b-0" />}
           </tr>
           <tr>
             <HeadCell>level</HeadCell>
-            {[0, 1].map((group) => [
-              <HeadCell key={`f${group}`} isNumeric>
+            {groups.map((group) => [
+              <HeadCell key={`f ${group}`} isNumeric className={groupEdge}>
                 <i>f</i>, %
               </HeadCell>,
-              <HeadCell key={`rate${group}`} isNumeric className="max-sm:whitespace-normal">
-                Poisson rate, %
+              <HeadCell key={`rate ${group}`} isNumeric className="max-sm:whitespace-normal">
+                Poisson rate,
+                <br className="max-sm:hidden" /> per 100
               </HeadCell>,
             ])}
             {copyOf && (
@@ -66,14 +84,20 @@ export function LevelTable({
                   {formatPlain(100 * row.level)}
                   {THIN_SPACE}%
                 </Cell>
-                <Cell isNumeric className={bound(chosen, 'host_fraction')}>
+                <Cell isNumeric className={`${bound(chosen, 'host_fraction')} ${groupEdge}`}>
                   {percentBelow(row.hostFraction)}
                 </Cell>
                 <Cell isNumeric className={bound(chosen, 'companions_per_star')}>
                   {percentBelow(row.meanNumber)}
                 </Cell>
-                <Cell isNumeric>{percentBelow(row.hostFractionZero)}</Cell>
-                <Cell isNumeric>{percentBelow(row.meanNumberZero)}</Cell>
+                {!isZeroAlone && (
+                  <>
+                    <Cell isNumeric className={groupEdge}>
+                      {percentBelow(row.hostFractionZero)}
+                    </Cell>
+                    <Cell isNumeric>{percentBelow(row.meanNumberZero)}</Cell>
+                  </>
+                )}
                 {copyOf && (
                   <Cell className="py-0">
                     <CopyOfRow row={row} quantity={quantity} copyOf={copyOf} />
@@ -109,7 +133,7 @@ export function countOf(detections: number): string {
   return detections === 1 ? '1 detection' : `${detections} detections`;
 }
 
-/** "<5.8", in per cent; a dash where the prior belongs to the other quantity. */
+/** "<5.8", in per cent, or planets per 100 stars; a dash where the prior belongs to the other quantity. */
 export function percentBelow(limit: number | null): string {
   return limit === null ? '–' : `<${formatSignificant(100 * limit, 2)}`;
 }

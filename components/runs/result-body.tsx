@@ -211,6 +211,7 @@ export function ResultBody(props: ResultBodyProps) {
             collaboration={collaboration}
             analysisKey={run.analysis.key}
             runId={run.id}
+            ofRun={shown.isLive ? run.number : undefined}
           />
         </div>
       </div>

@@ -10,11 +10,12 @@ import { documentOfShown } from '@/components/statement/document-of-shown';
 import { ShownStatementCopy } from '@/components/statement/statement-copy';
 import { FoldSection } from '@/components/ui/fold-section';
 import { describeLevel, describePrior } from '@/lib/inference';
+import { formatLimit } from '@/lib/quantities/display';
 import type { PowerLawDefinition } from '@/lib/schemas/populations';
 import type { DrawnInputs, DrawnResult, DrawnRun } from '@/lib/schemas/runs';
 import { BesideTable } from './beside-table';
 import { DetectionsSection } from './detections-section';
-import { LevelTable, percentBelow } from './level-table';
+import { LevelTable } from './level-table';
 import type { LiveSample } from './live-sample';
 import { SensitivitySection } from './sensitivity-section';
 import type { ShownResult } from './shown-result';
@@ -77,6 +78,7 @@ const Sensitivity = memo(function Sensitivity(props: ResultSectionsProps) {
         depth={depth}
         range={range}
         companions={inputs.companions}
+        counted={shown.counted}
         onRange={onRange}
       />
     </div>
@@ -183,7 +185,7 @@ function levelsInWords({ levels, quantity }: ShownResult): string {
     .flatMap((level) => {
       const row = rows.find((one) => Math.abs(one.level - level) < 1e-9);
       const limit = quantity === 'host_fraction' ? row?.hostFraction : row?.meanNumber;
-      return row ? [`${percentBelow(limit ?? null)}\u2009% at ${describeLevel(level)}`] : [];
+      return limit == null ? [] : [`${formatLimit(limit, quantity)} at ${describeLevel(level)}`];
     })
     .join(', ');
 }

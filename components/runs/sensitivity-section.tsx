@@ -19,14 +19,22 @@ interface SensitivitySectionProps {
   /** None where the masses in question differ from star to star. */
   range?: MapRange;
   companions: DetectionView[];
+  /** Those of them that the limit counts now. */
+  counted: { name: string }[];
   /** Given, the range is dragged in the map. */
   onRange?(range: MapRange): void;
 }
 
 /** Depth of search by survey over the mean map, on one axis. */
 export function SensitivitySection(props: SensitivitySectionProps) {
-  const { map, stars, exposure, depth, range, companions, onRange } = props;
-  const detections = useMemo(() => companions.map(asMark), [companions]);
+  const { map, stars, exposure, depth, range, companions, counted, onRange } = props;
+  const detections = useMemo(() => {
+    const isCounted = new Set(counted.map(({ name }) => name));
+    return companions.map((one) => {
+      const mark = asMark(one);
+      return isCounted.has(one.name) ? mark : { ...mark, name: `${one.name}, not counted` };
+    });
+  }, [companions, counted]);
   return (
     <FoldSection
       number={2}

@@ -37,6 +37,7 @@ export function StoredSections(props: StoredSectionsProps) {
           depth={depth}
           range={rangeOf(definition)}
           companions={inputs.companions}
+          counted={counted}
         />
         <div className="grid min-w-0 content-start md:gap-y-8">
           <FoldSection

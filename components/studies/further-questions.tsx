@@ -14,11 +14,13 @@ interface FurtherQuestionsProps {
   analysisKey: string;
   runId: string;
   number?: number;
+  /** Set while the setting on the screen is another: the answers are still those of this run. */
+  ofRun?: number;
 }
 
 /** What may be asked of a run next, with the newest answer of each. */
 export const FurtherQuestions = memo(function FurtherQuestions(props: FurtherQuestionsProps) {
-  const { collaboration, analysisKey, runId, number } = props;
+  const { collaboration, analysisKey, runId, number, ofRun } = props;
   const { data: studies, error } = useRunStudies(collaboration, runId);
   const newest = newestByKind(studies ?? []);
   const answered = kindOrder.filter((kind) => newest.get(kind)?.job.status === 'done').length;
@@ -27,7 +29,7 @@ export const FurtherQuestions = memo(function FurtherQuestions(props: FurtherQue
       id="further-questions"
       number={number}
       title="Further questions"
-      context="asked of this run, computed by the workers, kept with it"
+      context={`asked of ${ofRun === undefined ? 'this run' : `run ${ofRun}`}, computed by the workers, kept with it`}
       answer={`${answered} of ${kindOrder.length} answered`}
     >
       {error !== undefined && (
@@ -48,9 +50,12 @@ export const FurtherQuestions = memo(function FurtherQuestions(props: FurtherQue
                 <h3 className="text-body">{title}</h3>
                 <p className="text-ink2">{question}</p>
               </div>
-              <div className="min-w-0 text-ink2">
+              <div className={`min-w-0 ${ofRun === undefined ? 'text-ink2' : 'text-ink3'}`}>
                 {study ? (
-                  <AnswerState study={study} />
+                  <>
+                    <AnswerState study={study} />
+                    {ofRun !== undefined && study.job.status === 'done' && `, run ${ofRun}`}
+                  </>
                 ) : (
                   <span className="text-ink3">{studies ? 'not asked yet' : ''}</span>
                 )}
