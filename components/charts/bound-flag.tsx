@@ -1,3 +1,4 @@
+import type { Box } from './map-contours';
 import { textWidth } from './text-width';
 
 interface BoundFlagProps {
@@ -17,6 +18,22 @@ interface BoundFlagProps {
 
 const flagHeight = 26;
 
+function placeFlag({ x, text, right, left = 0 }: Omit<BoundFlagProps, 'top' | 'bottom'>) {
+  const width = textWidth(text, 16) + 24;
+  const hangsLeft = x + width > right + 4 && x - width > left - 4;
+  return { width, flagX: hangsLeft ? x + 1.5 - width : x - 1.5 };
+}
+
+/** What the flag and its bar cover, for what must keep clear of them. */
+export function flagBoxes(flag: Omit<BoundFlagProps, 'isOpen'>): Box[] {
+  const { width, flagX } = placeFlag(flag);
+  const { x, top, bottom } = flag;
+  return [
+    { left: flagX, right: flagX + width, top, bottom: top + flagHeight },
+    { left: x - 1.5, right: x + 1.5, top, bottom },
+  ];
+}
+
 /** The bound: a bar from the axis up and a flag with the limit and its level. */
 export function BoundFlag({
   x,
@@ -27,9 +44,7 @@ export function BoundFlag({
   left = 0,
   isOpen = false,
 }: BoundFlagProps) {
-  const width = textWidth(text, 16) + 24;
-  const hangsLeft = x + width > right + 4 && x - width > left - 4;
-  const flagX = hangsLeft ? x + 1.5 - width : x - 1.5;
+  const { width, flagX } = placeFlag({ x, text, right, left });
   const suffix = isOpen ? '-open' : '';
   return (
     <g>

@@ -3,10 +3,11 @@
 import { useId, useMemo, useState } from 'react';
 import { formatRate, type RateQuantity } from '@/lib/quantities/display';
 import { BottomAxis } from './axes';
-import { BoundFlag } from './bound-flag';
+import { BoundFlag, flagBoxes } from './bound-flag';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { ChartReadout, type ReadPlace } from './chart-readout';
 import { type DataTable, tableOfColumns } from './data-table';
+import { overlaidTop, placeNames } from './overlaid-layout';
 import { areaPath, linePath, valueAt } from './paths';
 import { limitWithLevel } from './posterior-words';
 import type { RateCurve } from './rate-curve';
@@ -16,7 +17,7 @@ import { linearTicks, withRateUnit } from './ticks';
 import { useWidth } from './use-width';
 
 export interface NamedPosterior {
-  /** One letter: it stands on the curve and on the flag. */
+  /** One letter: it stands beside the curve and on the flag. */
   letter: string;
   /** "A-31, zero detections". */
   label: string;
@@ -38,7 +39,7 @@ const margin = { left: 8, right: 14, top: 24, bottom: 50 };
 const dashes = ['none', '7 4', '2 3', '10 3 2 3', '1 5', '14 5'];
 const flagApart = 32;
 
-/** Posteriors of several runs on one axis, each with its letter on the curve and its bound. */
+/** Posteriors of several runs on one axis, each with its name beside the curve and its bound. */
 export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
   const { posteriors, quantity } = props;
   const [measure, width] = useWidth<HTMLDivElement>(820);
@@ -52,15 +53,29 @@ export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
     bottom: total - margin.bottom,
   };
   const max = Math.max(...posteriors.map(({ curve }) => curve.rate[curve.rate.length - 1]));
-  const top = useMemo(() => peakOf(posteriors), [posteriors]);
+  const top = useMemo(() => overlaidTop(posteriors.map(({ curve }) => curve)), [posteriors]);
   const x = scaleLinear([0, max], [frame.left, frame.right]);
   const y = scaleLinear([0, top], [frame.bottom, frame.top]);
   const densityAt = (curve: RateCurve, rate: number) => valueAt(curve.rate, curve.density, rate);
   const first = posteriors[0];
   const reads = useMemo(() => Array.from({ length: 121 }, (_, i) => (max * i) / 120), [max]);
-  const letters = placeLetters(posteriors, x, y);
-  const flags = [...posteriors].sort((a, b) => b.limit - a.limit);
-  const flagsTop = frame.bottom - 16 - flagApart * flags.length;
+  // From the top down, the smallest limit first: no bar then runs through the flag of another.
+  const flags = [...posteriors]
+    .sort((a, b) => a.limit - b.limit)
+    .map((one, index) => ({
+      one,
+      x: x(one.limit),
+      top: frame.top + 6 + flagApart * index,
+      text: `${one.letter} ${limitWithLevel(one.limit, one.credibleLevel, quantity)}`,
+    }));
+  const names = placeNames(
+    posteriors.map(({ letter, label, curve }) => ({
+      words: width < 560 ? [letter] : [`${letter}: ${label}`, letter],
+      curve,
+    })),
+    { x, y, frame },
+    flags.flatMap((flag) => flagBoxes({ ...frame, ...flag })),
+  );
   return (
     <ChartFigure
       name="posteriors"
@@ -113,9 +128,15 @@ export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
       <text className="quiet" x={frame.left} y={12}>
         posterior density
       </text>
-      {letters.map((place) => (
-        <text key={place.letter} className="bold page-halo" x={place.x} y={place.y}>
-          {place.letter}
+      {names.map((place) => (
+        <text
+          key={place.words}
+          className="bold page-halo"
+          x={place.x}
+          y={place.y}
+          textAnchor={place.anchor}
+        >
+          {place.words}
         </text>
       ))}
       {at && (
@@ -141,55 +162,18 @@ export function OverlaidPosteriorsChart(props: OverlaidPosteriorsChartProps) {
         isLastAtEdge
         name={quantity === 'host_fraction' ? 'host fraction' : 'planets per 100 stars'}
       />
-      {flags.map((one, index) => (
+      {flags.map(({ one, ...flag }) => (
         <BoundFlag
           key={one.letter}
-          x={x(one.limit)}
-          top={flagsTop + flagApart * index}
+          {...flag}
           bottom={frame.bottom}
           right={frame.right}
           left={frame.left}
-          text={`${one.letter} ${limitWithLevel(one.limit, one.credibleLevel, quantity)}`}
           isOpen={one !== first}
         />
       ))}
     </ChartFigure>
   );
-}
-
-/** A prior that rises to a pole at zero must not flatten the rest: the second highest peak counts. */
-function peakOf(posteriors: NamedPosterior[]): number {
-  const peaks = posteriors.map(({ curve }) => {
-    const sorted = Float64Array.from(curve.density.filter(Number.isFinite)).sort();
-    return sorted[Math.floor(0.985 * (sorted.length - 1))];
-  });
-  return 1.12 * Math.max(...peaks);
-}
-
-/** Each letter at the place of its curve where the others are furthest away. */
-function placeLetters(
-  posteriors: NamedPosterior[],
-  x: (rate: number) => number,
-  y: (density: number) => number,
-) {
-  const top = 30;
-  const taken: { x: number; y: number }[] = [];
-  return posteriors.map(({ letter, curve, limit }) => {
-    let best = { x: x(limit / 2) + 6, y: top, apart: -1 };
-    for (let share = 0.08; share < 1.3; share += 0.04) {
-      const rate = limit * share;
-      const at = { x: x(rate), y: y(valueAt(curve.rate, curve.density, rate)) };
-      if (!Number.isFinite(at.y) || at.y < top + 6) continue;
-      const others = posteriors
-        .filter((one) => one.letter !== letter)
-        .map((one) => Math.abs(y(valueAt(one.curve.rate, one.curve.density, rate)) - at.y));
-      const labels = taken.map((one) => Math.hypot(one.x - at.x, one.y - at.y) / 2);
-      const apart = Math.min(40, ...others, ...labels);
-      if (apart > best.apart) best = { x: at.x + 6, y: at.y - 5, apart };
-    }
-    taken.push(best);
-    return { letter, x: best.x, y: best.y };
-  });
 }
 
 function columnsOf({ letter, curve }: NamedPosterior, quantity: RateQuantity): DataTable {
