@@ -44,7 +44,11 @@ export function AnalysisList({ collaboration, initial, canCreate }: AnalysisList
         <section>
           <SectionOpener
             title="Upper limits"
-            context="bar: the limit at its level; box: central 68 %"
+            context={
+              <span className="max-lg:hidden">
+                bar: the limit at its level; box: central 68{'\u2009'}%
+              </span>
+            }
             tools={
               picked.length >= 2 && picked.length <= MOST_COMPARED ? (
                 <Link

@@ -2,6 +2,7 @@
 
 import { useMemo } from 'react';
 import { IntervalAxis, IntervalMark, intervalMax } from '@/components/charts/intervals-on-axis';
+import { AxisRange, MassRange } from '@/components/populations/law-notation';
 import { formatDuration } from '@/components/runs/time-words';
 import type { DataColumn, Facet } from '@/components/ui/data-table/column';
 import { DataTable } from '@/components/ui/data-table/data-table';
@@ -9,7 +10,7 @@ import { Link } from '@/components/ui/link';
 import { JupiterMass } from '@/components/ui/notation';
 import { type StateKind, StateMark } from '@/components/ui/state-mark';
 import { describeLevel } from '@/lib/inference';
-import { formatLimit, formatRange } from '@/lib/quantities/display';
+import { formatLimit, formatRange, rateUnit } from '@/lib/quantities/display';
 import type { AnalysisView } from '@/lib/schemas/analyses';
 import type { RunSummary } from '@/lib/schemas/runs';
 import { lawNames } from './prior-choice';
@@ -33,19 +34,26 @@ function columnsOf(collaboration: string, max: number): DataColumn<AnalysisView>
       name: 'analysis',
       isRowHead: true,
       value: ({ name }) => name,
-      cell: ({ key, name, population }) => (
-        <>
-          <Link
-            href={`/${collaboration}/analyses/${key}`}
-            className="text-ink max-md:inline-block max-md:py-2"
-          >
-            {name}
-          </Link>
-          <span className="block font-normal text-chart text-ink3 md:hidden">
-            {key}, {rangeWords(population.definition)}
-          </span>
-        </>
-      ),
+      cell: (analysis) => {
+        const { key, name, population } = analysis;
+        return (
+          <>
+            <Link
+              href={`/${collaboration}/analyses/${key}`}
+              className="text-ink max-md:inline-block max-md:py-2"
+            >
+              {name}
+            </Link>
+            <span className="block font-normal text-chart text-ink3 md:hidden">
+              {key}, <MassRange definition={population.definition} />,{' '}
+              <AxisRange definition={population.definition} />
+            </span>
+            <span className="block font-normal md:hidden">
+              <StateOf analysis={analysis} />
+            </span>
+          </>
+        );
+      },
     },
     {
       id: 'ranges',
@@ -80,7 +88,7 @@ function columnsOf(collaboration: string, max: number): DataColumn<AnalysisView>
       head: (
         <>
           <span className="sr-only">interval</span>
-          <IntervalAxis max={max} unit="" />
+          <IntervalAxis max={max} />
         </>
       ),
       name: 'interval',
@@ -121,12 +129,14 @@ function columnsOf(collaboration: string, max: number): DataColumn<AnalysisView>
       name: 'state',
       className: 'whitespace-nowrap max-md:hidden',
       value: (analysis) => stateOf(analysis, newestFinished(analysis)).words,
-      cell: (analysis) => {
-        const { kind, words } = stateOf(analysis, newestFinished(analysis));
-        return <StateMark kind={kind}>{words}</StateMark>;
-      },
+      cell: (analysis) => <StateOf analysis={analysis} />,
     },
   ];
+}
+
+function StateOf({ analysis }: { analysis: AnalysisView }) {
+  const { kind, words } = stateOf(analysis, newestFinished(analysis));
+  return <StateMark kind={kind}>{words}</StateMark>;
 }
 
 function LimitOf({ analysis }: { analysis: AnalysisView }) {
@@ -152,7 +162,16 @@ const states: Facet<AnalysisView> = {
   id: 'state',
   label: 'State',
   any: 'any state',
-  options: ['Running', 'Failed', 'Older inputs', 'Changed', 'Draft', 'No run yet'].map((words) => ({
+  options: [
+    'Running',
+    'Failed',
+    'Older inputs',
+    'Changed',
+    'Released',
+    'Frozen',
+    'Draft',
+    'No run yet',
+  ].map((words) => ({
     value: words,
     label: words.toLowerCase(),
   })),
@@ -235,14 +254,21 @@ function RunMark({
   if (run?.limit == null || !run.quantity) return null;
   const label = `limit ${formatLimit(run.limit, run.quantity)} at ${describeLevel(run.credibleLevel)}`;
   return (
-    <IntervalMark
-      limit={run.limit}
-      interval68={run.interval68 ?? undefined}
-      median={run.median ?? undefined}
-      isZero={run.detections === 0}
-      max={max}
-      label={label}
-    />
+    <>
+      <IntervalMark
+        limit={run.limit}
+        interval68={run.interval68 ?? undefined}
+        median={run.median ?? undefined}
+        isZero={run.detections === 0}
+        max={max}
+        label={label}
+      />
+      {run.quantity === 'companions_per_star' && (
+        <span className="block text-chart text-ink3">
+          here not %, but {rateUnit('companions_per_star')}
+        </span>
+      )}
+    </>
   );
 }
 

@@ -153,7 +153,11 @@ export function OverviewScreen({
               <SectionOpener
                 title="Analyses"
                 help="upper-limit"
-                context="upper limits; box: 68 % interval"
+                context={
+                  <>
+                    upper limits<span className="max-lg:hidden">; box: 68{'\u2009'}% interval</span>
+                  </>
+                }
                 tools={can.addAnalysis && <Link href={`${base}/analyses/new`}>New analysis</Link>}
               />
               <AnalysisTable collaboration={collaboration} analyses={analyses} />

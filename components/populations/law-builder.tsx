@@ -20,6 +20,7 @@ import { faultOf, hasIndexPlane, isSameLaw, type LawDefinition } from './law-par
 import { orbitWords } from './orbit-words';
 import { PopulationAlone } from './population-alone';
 import { SavePopulation } from './save-population';
+import { SharedMark } from './shared-mark';
 import { spreadOf } from './spread';
 import { type Preview, usePreview } from './use-preview';
 
@@ -192,5 +193,5 @@ function BuilderState({
 }) {
   if (!version) return <StateMark kind="unsaved">Not saved yet</StateMark>;
   if (isChanged) return <StateMark kind="unsaved">Unsaved change</StateMark>;
-  return <StateMark kind="draft">{version.isShared ? 'Shared with all' : 'Draft'}</StateMark>;
+  return <SharedMark isShared={version.isShared} />;
 }

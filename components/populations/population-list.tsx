@@ -7,12 +7,12 @@ import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
-import { StateMark } from '@/components/ui/state-mark';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { ListedPopulation } from '@/lib/schemas/populations';
 import { AxisRange, MassRange } from './law-notation';
 import { newestOfEach } from './newest-versions';
 import { LawsAlone } from './shape-words';
+import { SharedMark } from './shared-mark';
 
 interface PopulationListProps {
   collaboration: string;
@@ -98,7 +98,7 @@ export function PopulationList({ collaboration, initial, canCreate }: Population
                   <Cell className="max-lg:hidden">{population.createdBy ?? '–'}</Cell>
                   <Cell className="max-md:hidden">{population.usedBy.join(', ') || '–'}</Cell>
                   <Cell className="whitespace-nowrap max-md:hidden">
-                    <StateMark kind="draft">{population.isShared ? 'Shared' : 'Draft'}</StateMark>
+                    <SharedMark isShared={population.isShared} />
                   </Cell>
                 </Row>
               ))}

@@ -9,7 +9,6 @@ import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { SectionOpener } from '@/components/ui/section-opener';
-import { StateMark } from '@/components/ui/state-mark';
 import type { SystemsSummary } from '@/lib/population';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import type { ListedPopulation } from '@/lib/schemas/populations';
@@ -21,6 +20,7 @@ import { CopyWords, OnGrid } from './in-words';
 import { orbitWords } from './orbit-words';
 import { PopulationAlone } from './population-alone';
 import { PopulationPreview } from './population-preview';
+import { SharedMark } from './shared-mark';
 import { SystemsParts } from './systems-parts';
 import { SystemsUpload } from './systems-upload';
 import { usePreview } from './use-preview';
@@ -61,7 +61,7 @@ export function SystemsScreen(props: SystemsScreenProps) {
           { href: `/${collaboration}/populations`, label: 'Populations' },
           { label: `${version.key}, version ${version.version}` },
         ]}
-        state={<StateMark kind="draft">{version.isShared ? 'Shared with all' : 'Draft'}</StateMark>}
+        state={<SharedMark isShared={version.isShared} />}
         actions={
           <LinkButton
             href={`/${collaboration}/analyses/new?population=${version.id}`}
