@@ -22,6 +22,8 @@ interface EstimateProps {
   /** Newest finished run of the collaboration. */
   run: DrawnRun | null;
   surveys: SurveyView[];
+  /** Stars of these surveys, each once. */
+  chosenStars: number;
   setting?: LiveSetting;
   /** Known before the choices were checked: what the estimate will be of. */
   expected?: Pick<LiveSetting, 'definition' | 'credibleLevel'>;
@@ -31,7 +33,7 @@ interface EstimateProps {
 
 /** What the choices would give, from maps that a run has used already. */
 export function Estimate(props: EstimateProps) {
-  const { collaboration, run, surveys, setting, expected, needsRun = false } = props;
+  const { collaboration, run, surveys, chosenStars, setting, expected, needsRun = false } = props;
   const { data: maps, error, isLoading } = useRunMaps(collaboration, run ?? undefined);
   const inputs = run?.inputs ?? undefined;
   const ids = surveys.map((survey) => survey.id).join();
@@ -49,12 +51,17 @@ export function Estimate(props: EstimateProps) {
     (survey) => !inputs?.surveys.some((known) => known.id === survey.id),
   );
 
+  const withoutMap = estimate ? chosenStars - estimate.stars : 0;
+  const left = leftOutWords(inputs, surveys);
+
   const about = (definition: PowerLawDefinition) => (
     <p className="text-ink2 text-note">
       About this, for planets of <MassRange definition={definition} /> at{' '}
       <AxisRange definition={definition} />. From the maps of {run?.analysis.key}, run {run?.number}
       {missing.length > 0 &&
         `; ${listNames(missing.map((survey) => survey.name))} did not take part in it`}
+      {withoutMap > 0 &&
+        `; ${withoutMap} of the ${chosenStars} chosen stars have no map in it${left}`}
       . The run itself may differ where maps are newer.
     </p>
   );
@@ -96,6 +103,14 @@ export function Estimate(props: EstimateProps) {
       )}
     </section>
   );
+}
+
+/** Why a run left out entries of some surveys: " (left out: no curve and no map)". */
+function leftOutWords(inputs: DrawnRun['inputs'] | undefined, surveys: SurveyView[]): string {
+  const names = new Set(surveys.map(({ name }) => name));
+  const own = inputs?.leftOut.filter(({ survey }) => names.has(survey)) ?? [];
+  const reasons = [...new Set(own.map(({ reason }) => reason))];
+  return reasons.length === 0 ? '' : ` (left out: ${reasons.join('; ')})`;
 }
 
 interface EstimateFactsProps {

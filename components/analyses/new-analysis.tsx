@@ -29,7 +29,7 @@ import { tallyOpen } from './open-candidates';
 import { PopulationChoice } from './population-choice';
 import { RateChoice, type RateSetting } from './rate-choice';
 import { SampleChoice } from './sample-choice';
-import { SurveyChoice } from './survey-choice';
+import { countStars, SurveyChoice } from './survey-choice';
 
 interface NewAnalysisProps {
   collaboration: string;
@@ -180,6 +180,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
             collaboration={collaboration}
             run={previewRun}
             surveys={chosenSurveys}
+            chosenStars={countStars(surveys.overlaps, chosenSurveys)}
             needsRun={
               sampleId !== undefined ||
               stored !== undefined ||

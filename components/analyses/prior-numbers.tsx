@@ -40,10 +40,13 @@ interface PriorField {
 }
 
 function fieldsOf(prior: RatePrior, likelihood: Likelihood): PriorField[] {
-  const largest = likelihood === 'host-fraction' ? 1 : 1000;
+  const isFraction = likelihood === 'host-fraction';
+  const largest = isFraction ? 1 : 1000;
+  const unit = isFraction ? 'Fraction of stars.' : 'Planets per star.';
   const upTo = (value: number, put: (max: number) => RatePrior): PriorField => ({
     name: 'max',
     label: 'Largest rate',
+    hint: unit,
     max: largest,
     value,
     put,
@@ -56,7 +59,7 @@ function fieldsOf(prior: RatePrior, likelihood: Likelihood): PriorField[] {
         {
           name: 'min',
           label: 'Floor',
-          hint: 'With no detection the limit follows it.',
+          hint: `${unit} With no detection the limit follows it.`,
           max: prior.max,
           value: prior.min,
           put: (min) => ({ ...prior, min }),

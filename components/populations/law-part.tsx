@@ -136,6 +136,7 @@ export function LawPart(props: LawPartProps) {
             <EditableRange
               name={name.toLowerCase()}
               unit={unitWords}
+              mark={<WithUnit unit={unit}>{null}</WithUnit>}
               min={range[0]}
               max={range[1]}
               bounds={[...typed[unit as keyof typeof typed]]}

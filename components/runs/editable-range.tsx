@@ -5,7 +5,9 @@ import { type FocusEvent, type KeyboardEvent, type ReactNode, useRef, useState }
 interface EditableRangeProps {
   /** "planet mass", for readers. */
   name: string;
+  /** For readers, and as it is seen behind the fields. */
   unit: string;
+  mark: ReactNode;
   min: number;
   max: number;
   /** Ends that make sense at all. */
@@ -17,7 +19,7 @@ interface EditableRangeProps {
 
 /** A range inside a sentence: a press turns it into two fields; Enter takes them, Escape leaves. */
 export function EditableRange(props: EditableRangeProps) {
-  const { name, unit, min, max, bounds, children, onChange } = props;
+  const { name, unit, mark, min, max, bounds, children, onChange } = props;
   const [isOpen, setOpen] = useState(false);
   const [fault, setFault] = useState<string>();
   const fields = useRef<HTMLSpanElement>(null);
@@ -63,7 +65,7 @@ export function EditableRange(props: EditableRangeProps) {
     );
   }
   const look =
-    'w-[4.2em] border-ink3 border-b-[1.5px] border-dashed bg-transparent px-0.5 text-center font-semibold text-ink';
+    'w-[4.2em] [appearance:textfield] [&::-webkit-inner-spin-button]:appearance-none border-ink3 border-b-[1.5px] border-dashed bg-transparent px-0.5 text-center font-semibold text-ink';
   return (
     <span ref={fields} className="whitespace-nowrap">
       <input
@@ -87,6 +89,7 @@ export function EditableRange(props: EditableRangeProps) {
         onKeyDown={press}
         onBlur={leave}
       />
+      <span aria-hidden="true"> {mark}</span>
       {fault !== undefined && (
         <span role="alert" className="block whitespace-normal font-normal text-note text-ink2">
           {fault}

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { HelpMark } from '@/components/help/help-mark';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
+import { JupiterMass } from '@/components/ui/notation';
 import { type ConditionRow, Conditions, LiveMark, StatementNumber } from '@/components/ui/plate';
 import {
   describeBackground,
@@ -82,6 +83,7 @@ function Ranges({ setting, bounds, onDefinition }: ResultStatementProps) {
       <EditableRange
         name="planet mass"
         unit="Jupiter masses"
+        mark={<JupiterMass />}
         min={definition.massMinMjup}
         max={definition.massMaxMjup}
         bounds={bounds.mass}
@@ -95,6 +97,7 @@ function Ranges({ setting, bounds, onDefinition }: ResultStatementProps) {
       <EditableRange
         name="semi-major axis"
         unit="AU"
+        mark="AU"
         min={definition.semiMajorAxisMinAu}
         max={definition.semiMajorAxisMaxAu}
         bounds={bounds.axis}
