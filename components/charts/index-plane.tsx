@@ -10,6 +10,7 @@ import { tableOfField } from './data-table';
 import { type Box, boxesMeet } from './map-contours';
 import { CursorRing } from './reading-marks';
 import { frameWithin, scaleLinear } from './scales';
+import { textWidth } from './text-width';
 import { linearTicks } from './ticks';
 import { useWidth } from './use-width';
 
@@ -51,9 +52,16 @@ export function IndexPlane(props: IndexPlaneProps) {
   const py = (j: number) =>
     frame.bottom - ((j - 0.5) / (massIndex.length - 1)) * (frame.bottom - frame.top);
   const [hereX, hereY] = [x(here.semiMajorAxisIndex), y(here.massIndex)];
-  const hangsLeft = hereX > frame.right - 150;
+  const hereWords = `here: ${formatLimit(here.limit, quantity)}`;
+  const hereWidth = 12 + 1.1 * textWidth(hereWords, 13);
+  const hangsLeft = hereX + hereWidth > frame.right;
   const taken: Box[] = [
-    { left: hereX - 130, right: hereX + 130, top: hereY - 24, bottom: hereY + 12 },
+    {
+      left: hereX - (hangsLeft ? hereWidth : 10),
+      right: hereX + (hangsLeft ? 10 : hereWidth),
+      top: hereY - 26,
+      bottom: hereY + 10,
+    },
     { left: frame.left, right: frame.left + 90, top: frame.top, bottom: frame.top + 24 },
   ];
   const numbers = lines.flatMap(({ level, runs }) => {
@@ -137,7 +145,7 @@ export function IndexPlane(props: IndexPlaneProps) {
         y={hereY - 10}
         textAnchor={hangsLeft ? 'end' : 'start'}
       >
-        here: {formatLimit(here.limit, quantity)}
+        {hereWords}
       </text>
       <BottomAxis
         ticks={linearTicks(...ends(semiMajorAxisIndex), frame.right - frame.left)}

@@ -69,12 +69,25 @@ function panelOf(
   return { top, bottom, span, y: scaleLinear(span, [bottom, top]) };
 }
 
-/** Heights of names beside points, moved up where one would lie on another. */
-export function nameHeights(points: { x: number; y: number; words: string }[]): number[] {
+/** A name without room to the right of its point stands to the left of it. */
+export const hangsLeft = ({ x, words }: { x: number; words: string }, right: number) =>
+  x + 12 + textWidth(words, 13) > right;
+
+/**
+ * Heights of names beside points, moved up where one would lie on another or on a point's ring.
+ *
+ * @param end right end of the drawing
+ */
+export function nameHeights(
+  points: { x: number; y: number; words: string }[],
+  end: number,
+): number[] {
   // Rings of the points themselves are in the way as well.
   const placed = points.map(({ x, y }) => ({ left: x - 8, right: x + 8, y: y + 4 }));
-  return points.map(({ x, y, words }) => {
-    const [left, right] = [x + 9, x + textWidth(words, 13) + 24];
+  return points.map((point) => {
+    const { x, y } = point;
+    const reach = textWidth(point.words, 13) + 24;
+    const [left, right] = hangsLeft(point, end) ? [x - reach, x - 9] : [x + 9, x + reach];
     let at = y + 4;
     while (
       placed.some((one) => left < one.right && right > one.left && Math.abs(one.y - at) < 17)

@@ -9,6 +9,7 @@ import { dotsPath } from './paths';
 import { scaleLinear } from './scales';
 import { seriesColour } from './series';
 import { type Lasso, StarLasso } from './star-lasso';
+import { textWidth } from './text-width';
 import { linearTicks, withUnit } from './ticks';
 import { useWidth } from './use-width';
 
@@ -94,6 +95,9 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
   const points = placed.map((star) => ({ x: star.x, y: y(star.row) }));
   const ticks = withUnit(linearTicks(0, 100 * max, width - 34, 70), '\u2009%');
   const isNarrow = width < 520;
+  const named = placed.filter(
+    (star) => star.hosts !== undefined || (selected.size === 1 && selected.has(star.name)),
+  );
 
   return (
     <ChartFigure
@@ -173,31 +177,43 @@ export function StarDots({ stars, selected = noStars, onSelect, height = 262 }: 
           height={Math.abs(lasso.to.y - lasso.from.y)}
         />
       )}
-      {placed
-        .filter(
-          (star) => star.hosts !== undefined || (selected.size === 1 && selected.has(star.name)),
-        )
-        .map((star, index) => {
-          const goesLeft = star.x > width - 150;
-          const row = Math.min(y(star.row) - 40, 62 + 18 * index);
-          return (
-            <g key={star.name}>
-              <circle className="ring" cx={star.x} cy={y(star.row)} r={radius + 2.8} />
-              <path
-                className="leader"
-                d={`M${star.x},${y(star.row) - radius - 4}L${star.x + (goesLeft ? -6 : 6)},${row + 4}`}
-              />
-              <text
-                className="page-halo"
-                x={star.x + (goesLeft ? -8 : 8)}
-                y={row}
-                textAnchor={goesLeft ? 'end' : 'start'}
-              >
-                {star.hosts === undefined ? star.name : `hosts ${star.hosts}`}
-              </text>
-            </g>
-          );
-        })}
+      {named.map((star, index) => {
+        const goesLeft = star.x > width - 150;
+        const words = star.hosts === undefined ? star.name : `hosts ${star.hosts}`;
+        const reach = textWidth(words, 13) + 8;
+        const [left, right] = goesLeft ? [star.x - reach, star.x] : [star.x, star.x + reach];
+        let row = Math.min(y(star.row) - 40, 62 + 18 * index);
+        // A name gives way to the ring of another host.
+        while (
+          row > 18 &&
+          named.some(
+            (other) =>
+              other !== star &&
+              other.x > left - 8 &&
+              other.x < right + 8 &&
+              Math.abs(y(other.row) - row + 4) < 18,
+          )
+        ) {
+          row -= 18;
+        }
+        return (
+          <g key={star.name}>
+            <circle className="ring" cx={star.x} cy={y(star.row)} r={radius + 2.8} />
+            <path
+              className="leader"
+              d={`M${star.x},${y(star.row) - radius - 4}L${star.x + (goesLeft ? -6 : 6)},${row + 4}`}
+            />
+            <text
+              className="page-halo"
+              x={star.x + (goesLeft ? -8 : 8)}
+              y={row}
+              textAnchor={goesLeft ? 'end' : 'start'}
+            >
+              {words}
+            </text>
+          </g>
+        );
+      })}
       <BottomAxis
         ticks={ticks}
         scale={(percent) => x(percent / 100)}

@@ -13,6 +13,7 @@ import { BottomAxis, LeftAxis } from './axes';
 import { ChartFigure, type ChartTable } from './chart-figure';
 import { PointReadout } from './chart-readout';
 import {
+  hangsLeft,
   type InfluencePanel,
   type InfluenceStar,
   influencePanels,
@@ -61,7 +62,7 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
   const hosting = stars.flatMap(({ hosts }, index) =>
     hosts.length === 0 ? [] : [{ ...points[index], words: `hosts ${hosts.join(', ')}` }],
   );
-  const heights = nameHeights(hosting);
+  const heights = nameHeights(hosting, frame.right);
   const half = stars[stars.length - halfCarriedBy]?.probability;
   const chosen = at === undefined ? undefined : points[at];
   const say = (index: number) => {
@@ -125,7 +126,18 @@ export function StarInfluenceChart(props: StarInfluenceChartProps) {
         </text>
       )}
       {hosting.map((host, index) => (
-        <Host key={host.words} {...host} nameY={heights[index]} frame={frame} />
+        <text
+          key={host.words}
+          className="page-halo"
+          x={hangsLeft(host, frame.right) ? host.x - 11 : host.x + 11}
+          y={heights[index]}
+          textAnchor={hangsLeft(host, frame.right) ? 'end' : 'start'}
+        >
+          {host.words}
+        </text>
+      ))}
+      {hosting.map(({ x: at, y, words }) => (
+        <circle key={words} className="ring" cx={at} cy={y} r="7" />
       ))}
       <text className="bound-text page-halo" x={frame.left + 6} y={main.y(limit) + 17}>
         all stars: {formatLimit(limit, quantity)}
@@ -185,35 +197,6 @@ function HalfLine({ x, stars, frame }: { x: number; stars: number; frame: Box })
       </text>
       <text className="page-halo" {...words} y={frame.top + 31}>
         {stars === 1 ? 'carries' : 'carry'} half of the sensitivity
-      </text>
-    </g>
-  );
-}
-
-function Host({
-  x,
-  y,
-  words,
-  nameY,
-  frame,
-}: {
-  x: number;
-  y: number;
-  words: string;
-  nameY: number;
-  frame: Box;
-}) {
-  const hangsLeft = x + 12 + textWidth(words, 13) > frame.right;
-  return (
-    <g>
-      <circle className="ring" cx={x} cy={y} r="7" />
-      <text
-        className="page-halo"
-        x={hangsLeft ? x - 11 : x + 11}
-        y={nameY}
-        textAnchor={hangsLeft ? 'end' : 'start'}
-      >
-        {words}
       </text>
     </g>
   );

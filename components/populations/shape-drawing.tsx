@@ -33,6 +33,8 @@ const height = 112;
 const top = 14;
 const bottom = 86;
 const POINTS = 160;
+/** The drawing reaches up to so many times the highest place of the range. */
+const MOST_OUTSIDE = 3;
 
 /** Server and browser differ in the last bit of a logarithm: what both write must not show it. */
 const toHundredth = (px: number) => Math.round(100 * px) / 100;
@@ -54,7 +56,9 @@ export function ShapeDrawing(props: ShapeDrawingProps) {
   const heights = at.map(density);
   const inside = at.filter((value) => value >= range[0] && value <= range[1]);
   const tallest = Math.max(...[...inside, ...range].map(density), Number.MIN_VALUE);
-  const y = scaleLinear([0, tallest], [bottom, top + 8]);
+  // What rises outside the range is cut only where it would flatten the part in question.
+  const highest = Math.min(Math.max(tallest, ...heights), MOST_OUTSIDE * tallest);
+  const y = scaleLinear([0, highest], [bottom, top + 8]);
   const clamped = (value: number) => toHundredth(Math.max(top - 20, y(value)));
 
   const share = (value: number) =>
