@@ -29,6 +29,8 @@ export interface TraceSliderProps {
   formatLimit(limit: number): string;
   /** Value as seen; a plain number unless given: "95 %", "+1 σ". */
   formatValue?(value: number): string;
+  /** Ends of a number that is typed, where they are not those of the track. */
+  typed?: readonly [number, number];
   /** "at 95 per cent": the end of the spoken sentence. */
   levelWords?: string;
   /** Numbers under the track, where even steps would be wrong. */
@@ -170,11 +172,22 @@ export function TraceSlider(props: TraceSliderProps) {
 
 /** The value above the track; pressed, it becomes a field for an exact number, off the steps. */
 function NumberOnDemand(props: TraceSliderProps & { formatValue(value: number): string }) {
-  const { name, value, min, max, onChange, formatValue } = props;
+  const { name, value, min, max, typed = [min, max], onChange, formatValue } = props;
   const [isOpen, setOpen] = useState(false);
+  const [isRefused, setRefused] = useState(false);
+  const button = useRef<HTMLButtonElement>(null);
+  const close = () => {
+    setOpen(false);
+    setRefused(false);
+  };
+  const closeByKey = () => {
+    close();
+    requestAnimationFrame(() => button.current?.focus());
+  };
   if (!isOpen) {
     return (
       <button
+        ref={button}
         type="button"
         className="shrink-0 font-semibold text-ink text-value"
         aria-label={`${name} ${formatValue(value)}, enter a number`}
@@ -184,25 +197,44 @@ function NumberOnDemand(props: TraceSliderProps & { formatValue(value: number): 
       </button>
     );
   }
-  const commit = (text: string) => {
-    const number = Number(text.replace('−', '-').replace(',', '.'));
-    if (text.trim() !== '' && Number.isFinite(number)) {
-      onChange(Math.min(max, Math.max(min, number)), true);
-    }
-    setOpen(false);
+  const ends = typed.map(formatValue).join(' to ');
+  const commit = (text: string, leave: () => void) => {
+    const number = typedNumber(text, typed);
+    if (number === undefined && text !== String(value)) return setRefused(true);
+    if (number !== undefined) onChange(number, true);
+    leave();
   };
   return (
-    <input
-      ref={(element) => element?.select()}
-      className="w-16 shrink-0 rounded border border-rule2 bg-surface px-1 text-right font-semibold text-ink"
-      aria-label={`${name}, ${formatPlain(min)} to ${formatPlain(max)}`}
-      inputMode="decimal"
-      defaultValue={String(value)}
-      onBlur={(event) => commit(event.target.value)}
-      onKeyDown={(event) => {
-        if (event.key === 'Enter') commit(event.currentTarget.value);
-        if (event.key === 'Escape') setOpen(false);
-      }}
-    />
+    <span className="text-right">
+      <input
+        ref={selectOnce}
+        className="w-16 rounded border border-rule2 bg-surface px-1 text-right font-semibold text-ink"
+        aria-label={`${name}, ${ends}`}
+        aria-invalid={isRefused}
+        inputMode="decimal"
+        defaultValue={String(value)}
+        onBlur={(event) => commit(event.target.value, close)}
+        onKeyDown={(event) => {
+          if (event.key === 'Enter') commit(event.currentTarget.value, closeByKey);
+          if (event.key === 'Escape') closeByKey();
+        }}
+      />
+      {isRefused && (
+        <span role="alert" className="block whitespace-normal">
+          Give a number, {ends}.
+        </span>
+      )}
+    </span>
   );
+}
+
+const selectOnce = (element: HTMLInputElement | null) => element?.select();
+
+/** The number that somebody wrote, if it is one between the ends. */
+export function typedNumber(
+  text: string,
+  [low, high]: readonly [number, number],
+): number | undefined {
+  const number = text.trim() === '' ? Number.NaN : Number(text.replace('−', '-').replace(',', '.'));
+  return number >= low && number <= high ? number : undefined;
 }

@@ -16,7 +16,7 @@ import type { Consequences } from './consequences';
 import { formatShift, shiftsOf } from './input-choices';
 import { type LiveSetting, tidy, withInputs } from './live-setting';
 import { ResultSwitches, type ResultSwitchesProps } from './result-switches';
-import { TRACK, trackOf } from './tracks';
+import { TRACK, TYPED_LEVEL, trackOf } from './tracks';
 
 interface ResultConsoleProps extends Omit<ResultSwitchesProps, 'further'> {
   grid: MapGrid;
@@ -176,6 +176,7 @@ export function ResultConsole(props: ResultConsoleProps) {
           savedValue={tidy(100 * saved.credibleLevel)}
           min={100 * levelMin}
           max={100 * levelMax}
+          typed={TYPED_LEVEL}
           step={0.5}
           ticks={LEVEL_TICKS}
           onChange={(next) => onSetting({ ...setting, credibleLevel: tidy(next / 100) })}

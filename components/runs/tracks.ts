@@ -5,6 +5,9 @@ export const TRACK = {
   level: [0.5, 0.99],
 } as const satisfies Record<string, readonly [number, number]>;
 
+/** Credible levels that may be typed [per cent]: a recipe takes any between 0 and 100. */
+export const TYPED_LEVEL = [0.01, 99.99] as const;
+
 /** A track reaches to the values themselves where those lie beyond its usual ends. */
 export function trackOf(
   [from, to]: readonly [number, number],

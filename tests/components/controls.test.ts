@@ -2,7 +2,12 @@ import { createElement } from 'react';
 import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
 import { placeRangeEnd } from '@/components/charts/range-box';
-import { snapToStep, TraceSlider, traceValueText } from '@/components/charts/trace-slider';
+import {
+  snapToStep,
+  TraceSlider,
+  traceValueText,
+  typedNumber,
+} from '@/components/charts/trace-slider';
 import { Button } from '@/components/ui/button';
 import { ConsequenceSwitch } from '@/components/ui/consequence-switch';
 import { TextField } from '@/components/ui/text-field';
@@ -55,6 +60,16 @@ describe('snapToStep', () => {
     expect(snapToStep(0.4499, -2, 2, 0.1)).toBe(0.4);
     expect(snapToStep(-7, -2, 2, 0.1)).toBe(-2);
     expect(snapToStep(99.96, 50, 99.9, 0.1)).toBe(99.9);
+  });
+});
+
+describe('typedNumber', () => {
+  it('takes what lies between the ends, off the steps, and nothing else', () => {
+    expect(typedNumber('99.7', [0.01, 99.99])).toBe(99.7);
+    expect(typedNumber('−1,25', [-2.5, 0.5])).toBe(-1.25);
+    for (const text of ['−9', '0.6', 'abc', ' ', '']) {
+      expect(typedNumber(text, [-2.5, 0.5])).toBeUndefined();
+    }
   });
 });
 
