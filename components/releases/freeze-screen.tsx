@@ -1,11 +1,12 @@
 'use client';
 
-import { useState } from 'react';
+import { Fragment, useState } from 'react';
 import { useAction } from '@/components/hooks/use-action';
 import { bundleAddress, freezeRun } from '@/components/hooks/use-releases';
 import { Button } from '@/components/ui/button';
 import { FormulaWords } from '@/components/ui/formula-words';
 import { Icon } from '@/components/ui/icon';
+import { Link } from '@/components/ui/link';
 import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
@@ -25,12 +26,14 @@ interface FreezeScreenProps {
   conditions: string[];
   canRelease: boolean;
   links: GuestLinkView[];
+  /** Whoever may freeze it, for those who may not; nobody in an archived collaboration. */
+  askable: { id: string; name: string }[];
 }
 
 /** What freezing means, its checks, the reason where one is asked for, and what may follow. */
 export function FreezeScreen(props: FreezeScreenProps) {
   const day = useDay();
-  const { collaboration, initial, sentence, conditions, canRelease, links } = props;
+  const { collaboration, initial, sentence, conditions, canRelease, links, askable } = props;
   const [standing, setStanding] = useState(initial);
   const [reason, setReason] = useState('');
   const { perform, isBusy, problem } = useAction();
@@ -68,7 +71,7 @@ export function FreezeScreen(props: FreezeScreenProps) {
                 </span>
                 <span>
                   {check.words}
-                  {!check.isMet && !check.stops && !frozen && (
+                  {!check.isMet && !check.stops && !frozen && standing.canFreeze && (
                     <span className="block text-ink3">A reason is asked for.</span>
                   )}
                 </span>
@@ -140,8 +143,36 @@ export function FreezeScreen(props: FreezeScreenProps) {
                 </div>
               </div>
             ) : (
-              <Notice tone="neutral" icon="lock" title="An author or an owner freezes runs.">
-                Ask one of them to freeze {name}.
+              <Notice
+                tone="neutral"
+                icon="lock"
+                title={
+                  askable.length === 0
+                    ? 'This collaboration is archived.'
+                    : 'An author or an owner freezes runs.'
+                }
+              >
+                {askable.length === 0 ? (
+                  'Nothing in it changes until an owner opens it again in its settings.'
+                ) : (
+                  <>
+                    Ask {askable.length > 1 && 'one of them: '}
+                    {askable.map((person, i) => (
+                      <Fragment key={person.id}>
+                        {i > 0 && ', '}
+                        <bdi>{person.name}</bdi>
+                      </Fragment>
+                    ))}
+                    .{' '}
+                    <Link
+                      className="underline underline-offset-3"
+                      href={`/${collaboration}/analyses/${run.analysisKey}#notes`}
+                    >
+                      Write a note on {run.analysisKey}
+                    </Link>
+                    : whom you name there with an @ gets a message.
+                  </>
+                )}
               </Notice>
             )}
           </div>
