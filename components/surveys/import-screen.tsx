@@ -181,7 +181,7 @@ export function ImportScreen({
           <SectionOpener
             number={2}
             title="Check"
-            context="each line was read; nothing is stored yet"
+            context={`each line was read${stored.length === 0 ? '; nothing is stored yet' : ''}`}
           />
           <div className="flex flex-col gap-8">
             {entries.map((entry) => (
