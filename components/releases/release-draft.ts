@@ -41,3 +41,24 @@ export function draftWords(
     Replaces: draft.replacesId === null ? 'no earlier release' : nameOf(draft.replacesId),
   };
 }
+
+const FIELDS: Record<string, string> = {
+  title: 'Title',
+  authors: 'Authors',
+  name: 'name',
+  affiliation: 'affiliation',
+  orcid: 'ORCID iD',
+  abstract: 'Abstract',
+  licence: 'Licence',
+  note: 'Note',
+  runIds: 'Frozen runs',
+  replacesId: 'Replaces',
+};
+
+/** Where a fault lies, as the form names it: "Author 1, ORCID iD". */
+export function placeWords([field, at, part]: readonly PropertyKey[]): string {
+  const name = FIELDS[String(field)] ?? 'Form';
+  if (field !== 'authors' || at === undefined) return name;
+  const author = `Author ${Number(at) + 1}`;
+  return part === undefined ? author : `${author}, ${FIELDS[String(part)] ?? String(part)}`;
+}

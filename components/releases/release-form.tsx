@@ -16,7 +16,7 @@ import { TextAreaField } from '@/components/ui/text-area-field';
 import { TextField } from '@/components/ui/text-field';
 import { licences } from '@/lib/schemas/licences';
 import { AuthorFields } from './author-fields';
-import { draftOf, draftWords, type ReleaseDraft } from './release-draft';
+import { draftOf, draftWords, placeWords, type ReleaseDraft } from './release-draft';
 import { furtherGround } from './release-words';
 
 /** A frozen run that may be part of a release. */
@@ -68,7 +68,7 @@ export function ReleaseForm(props: ReleaseFormProps) {
     const parsed = createReleaseSchema.safeParse({ ...draft, authors });
     if (!parsed.success) {
       const [issue] = parsed.error.issues;
-      setProblem(`${issue.path.join(', ') || 'form'}: expected ${issue.message}`);
+      setProblem(`${placeWords(issue.path)}: expected ${issue.message}`);
       return;
     }
     setBusy(true);
