@@ -12,6 +12,7 @@ import { listAnalyses } from './analyses';
 import { describeJobs } from './jobs';
 import { leadOf } from './lead-analysis';
 import { describeSteps, type HistoryRun } from './limit-history';
+import { needsTwoPeople } from './settings';
 import { sharingNotices } from './sharing/notices';
 import { listSurveys } from './surveys';
 import { together } from './together';
@@ -119,6 +120,50 @@ async function undecidedCandidates(actor: Actor, lead: AnalysisView | null): Pro
   }));
 }
 
+/** Releases that lack a signature which this person may give, the newest first. */
+async function unsignedReleases(actor: Actor): Promise<Waiting> {
+  const maySignOff = may(actor, 'sign-off-release');
+  const mayAgree = may(actor, 'agree-release');
+  if (!maySignOff && !mayAgree) return [];
+  const rows = await database().query<{
+    key: string;
+    title: string;
+    isSignedOff: boolean;
+    isAgreed: boolean;
+    isOwnFreeze: boolean;
+  }>(
+    `select 'R-' || r.number as key, r.title, r.signed_off_at is not null as "isSignedOff",
+       r.agreed_at is not null as "isAgreed",
+       exists (select from release_run q join frozen_run f on f.run_id = q.run_id
+               where q.release_id = r.id and f.frozen_by = $2) as "isOwnFreeze"
+     from release r
+     where r.collaboration_id = $1 and r.published_at is null
+       and (r.signed_off_at is null or r.agreed_at is null)
+     order by r.number desc`,
+    { bind: [actor.collaborationId, actor.personId], type: QueryTypes.SELECT },
+  );
+  const isTwo =
+    mayAgree &&
+    rows.some(({ isOwnFreeze }) => isOwnFreeze) &&
+    (await needsTwoPeople(actor.collaborationId));
+  return rows.flatMap(({ key, title, isSignedOff, isAgreed, isOwnFreeze }) => {
+    const steps = [
+      ...(maySignOff && !isSignedOff ? ['a statistician signs it off'] : []),
+      ...(mayAgree && !isAgreed && !(isTwo && isOwnFreeze) ? ['an author or an owner agrees'] : []),
+    ];
+    if (steps.length === 0) return [];
+    const which = isSignedOff || isAgreed ? 'second signature' : 'signatures';
+    return [
+      {
+        fact: `${key} waits for its ${which}`,
+        detail: `${title}: ${steps.join(', ')}`,
+        verb: 'Open',
+        address: `/${actor.collaboration}/releases/${key}`,
+      },
+    ];
+  });
+}
+
 async function openJobs(collaborationId: string): Promise<JobView[]> {
   const rows = await JobRow.findAll({
     where: { collaborationId, status: { [Op.in]: ['waiting', 'running'] } },
@@ -155,12 +200,13 @@ async function readAlike(actor: Actor, lead: AnalysisView | null) {
 /** Where a collaboration stands, and what waits for a person. */
 export async function getOverview(actor: Actor): Promise<Overview> {
   const { collaborationId, collaboration: slug } = actor;
-  const [row, surveys, { analyses }, sharing] = await Promise.all([
+  const [row, surveys, { analyses }, unsigned, sharing] = await Promise.all([
     together(`collaboration ${collaborationId}`, () =>
       CollaborationRow.findByPk(collaborationId, { rejectOnEmpty: true }),
     ),
     listSurveys(actor),
     listAnalyses(actor),
+    unsignedReleases(actor),
     sharingNotices(actor),
   ]);
   const lead = leadOf(analyses, row.settings);
@@ -178,6 +224,7 @@ export async function getOverview(actor: Actor): Promise<Overview> {
       ...failedJobs(slug, surveys.surveys, analyses),
       ...failedMaps(slug, surveys.surveys),
       ...candidates,
+      ...unsigned,
       ...sharing,
     ],
     log: log.map(({ at, who, what }) => ({ at: at.toISOString(), who, what })),

@@ -2,6 +2,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { POST as bringIn } from '@/app/api/v1/collaborations/[collaboration]/bundles/route';
 import { DELETE as endLink } from '@/app/api/v1/collaborations/[collaboration]/guest-links/[link]/route';
 import { POST as giveLink } from '@/app/api/v1/collaborations/[collaboration]/guest-links/route';
+import { GET as getOverview } from '@/app/api/v1/collaborations/[collaboration]/overview/route';
 import { POST as agree } from '@/app/api/v1/collaborations/[collaboration]/releases/[release]/agree/route';
 import { POST as checkAgain } from '@/app/api/v1/collaborations/[collaboration]/releases/[release]/check/route';
 import { POST as publish } from '@/app/api/v1/collaborations/[collaboration]/releases/[release]/publish/route';
@@ -24,6 +25,8 @@ import { POST as writeNote } from '@/app/api/v1/guest/[token]/notes/route';
 import { GET as getFile } from '@/app/api/v1/releases/[code]/files/[file]/route';
 import { packFiles, unpackFiles } from '@/lib/formats/bundle';
 import { describePrior } from '@/lib/inference';
+import type { Role } from '@/lib/schemas/common';
+import { overviewSchema } from '@/lib/schemas/overview';
 import { freezeStandingSchema, newGuestLinkSchema } from '@/lib/schemas/releases';
 import { readAsGuest } from '@/lib/services/releases/guest-links';
 import { listImports } from '@/lib/services/releases/import-bundle';
@@ -117,6 +120,13 @@ describe('freezing a run', () => {
 
 describe('a release', () => {
   const params = { release: 'R-1' };
+  /** What the overview says of the release to the member of a role. */
+  const waitsFor = async (role: Role) => {
+    const { waiting } = overviewSchema.parse(await (await ask(getOverview, { role })).json());
+    return waiting
+      .filter(({ address }) => address.endsWith('/releases/R-1'))
+      .map((one) => one.fact);
+  };
 
   it('checks the iD of each author, and takes frozen runs of its collaboration only', async () => {
     const body = {
@@ -152,9 +162,15 @@ describe('a release', () => {
       403,
       expect.stringContaining('You froze a run of this release'),
     ]);
+    expect(await waitsFor('statistician')).toEqual(['R-1 waits for its signatures']);
     expect((await view(await post(signOff, { role: 'statistician', params }))).state).toBe('draft');
+    expect(await waitsFor('owner')).toEqual(['R-1 waits for its second signature']);
+    for (const role of ['statistician', 'author', 'student'] as const) {
+      expect(await waitsFor(role)).toEqual([]);
+    }
     const agreed = await view(await post(agree, { role: 'owner', params }));
     expect(agreed.job).not.toBeNull();
+    expect(await waitsFor('owner')).toEqual([]);
     await untilChecked();
     const checked = await view(await ask(getRelease, { role: 'student', params }));
     expect(checked.state).toBe('checked');
