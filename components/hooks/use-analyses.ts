@@ -8,6 +8,8 @@ import { change, removeShown, requireSame } from './change';
 import { request } from './request';
 
 const POLL_MS = 1000;
+/** Below the pace of asking: what SWR is asked again within this time it does not fetch. */
+const FRESH_MS = POLL_MS / 2;
 
 export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
   return useSWR(
@@ -15,6 +17,7 @@ export function useAnalyses(collaboration: string, fallback?: AnalysisView[]) {
     async (path) => (await request(path, answer('analysisListSchema'))).analyses,
     {
       fallbackData: fallback,
+      dedupingInterval: FRESH_MS,
       // Before the first answer of its own SWR knows nothing of the fallback.
       refreshInterval: (list = fallback) =>
         list?.some((analysis) => analysis.state === 'running') ? POLL_MS : 0,
@@ -29,6 +32,7 @@ export function useAnalysis(collaboration: string, key: string, fallback?: Analy
     (path) => request(path, answer('analysisSchema')),
     {
       fallbackData: fallback,
+      dedupingInterval: FRESH_MS,
       refreshInterval: (analysis = fallback) => (analysis?.state === 'running' ? POLL_MS : 0),
     },
   );

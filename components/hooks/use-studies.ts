@@ -9,6 +9,8 @@ import { apiPath, withQuery } from './api-path';
 import { request, requestNothing } from './request';
 
 const POLL_MS = 1000;
+/** Below the pace of asking: what SWR is asked again within this time it does not fetch. */
+const FRESH_MS = POLL_MS / 2;
 
 const isOpen = ({ status }: JobView) => status === 'waiting' || status === 'running';
 /** Given as an arrow of each render: the same function twice would not be asked after new data. */
@@ -24,7 +26,7 @@ export function useRunStudies(collaboration: string, runId: string | undefined) 
   return useSWR(
     runId === undefined ? null : apiPath(collaboration, 'runs', runId, 'studies'),
     fetchStudies,
-    { refreshInterval: (studies) => pollWhileOpen(studies) },
+    { dedupingInterval: FRESH_MS, refreshInterval: (studies) => pollWhileOpen(studies) },
   );
 }
 
@@ -36,6 +38,7 @@ export function useStudiesOfKind(
 ) {
   return useSWR(withQuery(apiPath(collaboration, 'studies'), { kind }), fetchStudies, {
     fallbackData: fallback,
+    dedupingInterval: FRESH_MS,
     refreshInterval: (studies) => pollWhileOpen(studies),
   });
 }
@@ -48,6 +51,7 @@ export function useStudy(collaboration: string, id: string | undefined, first?: 
     (path) => request(path, answer('studySchema')),
     {
       fallbackData: fallback,
+      dedupingInterval: FRESH_MS,
       revalidateIfStale: fallback?.job.status !== 'done',
       refreshInterval: (study) => (study && isOpen(study.job) ? POLL_MS : 0),
       revalidateOnFocus: false,

@@ -22,6 +22,8 @@ import { request } from './request';
 type UpdateSurvey = z.input<typeof updateSurveySchema>;
 
 const POLL_MS = 1500;
+/** Below the pace of asking: what SWR is asked again within this time it does not fetch. */
+const FRESH_MS = POLL_MS / 2;
 const isComputing = (survey: SurveyView | undefined) =>
   survey?.mapJob?.status === 'running' || survey?.mapJob?.status === 'waiting';
 
@@ -31,6 +33,7 @@ export function useSurveys(collaboration: string, fallback: SurveyList) {
     (path) => request(path, answer('surveyListSchema')),
     {
       fallbackData: fallback,
+      dedupingInterval: FRESH_MS,
       refreshInterval: (list = fallback) => (list.surveys.some(isComputing) ? POLL_MS : 0),
     },
   );
@@ -43,6 +46,7 @@ export function useSurvey(collaboration: string, slug: string, fallback: SurveyV
     (path) => request(path, answer('surveySchema')),
     {
       fallbackData: fallback,
+      dedupingInterval: FRESH_MS,
       refreshInterval: (survey = fallback) => (isComputing(survey) ? POLL_MS : 0),
     },
   );
