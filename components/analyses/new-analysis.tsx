@@ -4,16 +4,23 @@ import { useRouter } from 'next/navigation';
 import { useMemo, useState } from 'react';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { useAction } from '@/components/hooks/use-action';
-import { createAnalysis } from '@/components/hooks/use-analyses';
+import {
+  changeAnalysis,
+  createAnalysis,
+  type NameAndRecipe,
+} from '@/components/hooks/use-analyses';
+import { useEditing } from '@/components/hooks/use-editing';
 import { startRun } from '@/components/hooks/use-runs';
 import { CHECKS_COME, useSchema } from '@/components/hooks/use-schema';
 import { useCompanionsOf } from '@/components/hooks/use-surveys';
 import { useUnpackedRun } from '@/components/hooks/use-unpacked';
+import { recipeWords } from '@/components/runs/recipe-words';
 import { Button } from '@/components/ui/button';
+import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import { Notice } from '@/components/ui/notice';
 import { PageTitle } from '@/components/ui/page-title';
 import { TextField } from '@/components/ui/text-field';
-import type { AnalysisRecipe } from '@/lib/schemas/analyses';
+import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
 import type { CombinationView } from '@/lib/schemas/combinations';
 import type { PackedRun } from '@/lib/schemas/packed-run';
 import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
@@ -43,6 +50,8 @@ interface NewAnalysisProps {
   stored?: CombinationView;
   /** What the settings of the collaboration say that new analyses begin with. */
   usual: Pick<AnalysisRecipe, 'credibleLevel' | 'combination'>;
+  /** An analysis that is changed; a new one without it. */
+  draft?: AnalysisView;
 }
 
 const loadSchema = async () => (await import('@/lib/schemas/analyses')).analysisRecipeSchema;
@@ -52,34 +61,50 @@ const FIRST_RATE: Omit<RateSetting, 'credibleLevel'> = {
   prior: { law: 'uniform', max: 1 },
 };
 
+const rateOf = ({ likelihood, prior, credibleLevel, background }: AnalysisRecipe): RateSetting => ({
+  likelihood,
+  prior,
+  credibleLevel,
+  background,
+});
+
 /** One page, four choices with sensible defaults, and what they would give. */
 export function NewAnalysis(props: NewAnalysisProps) {
-  const { collaboration, surveys, populations, wanted, stored, usual } = props;
+  const { collaboration, surveys, populations, wanted, stored, usual, draft } = props;
+  const before = draft?.recipe;
   const previewRun = useUnpackedRun(props.previewRun);
   const router = useRouter();
-  const offered = surveys.surveys.filter((survey) => !survey.isArchived);
+  const offered = surveys.surveys.filter(
+    (survey) => !survey.isArchived || before?.surveyIds.includes(survey.id),
+  );
   const ready = offered.filter((survey) => survey.maps.ready > 0);
   const [chosen, setChosen] = useState<string[]>(
-    stored?.definition.surveyIds ?? (ready.length > 0 ? ready : offered).map((survey) => survey.id),
+    before?.surveyIds ??
+      stored?.definition.surveyIds ??
+      (ready.length > 0 ? ready : offered).map((survey) => survey.id),
   );
   const [populationId, setPopulationId] = useState(
-    (
-      populations.find((population) => population.id === wanted || population.key === wanted) ??
-      populations[0]
-    )?.id ?? '',
+    before?.populationId ??
+      (
+        populations.find((population) => population.id === wanted || population.key === wanted) ??
+        populations[0]
+      )?.id ??
+      '',
   );
-  const [detections, setDetections] = useState<AnalysisRecipe['detections']>('counted');
-  const [candidates, setCandidates] = useState<AnalysisRecipe['candidates']>();
+  const [detections, setDetections] = useState<AnalysisRecipe['detections']>(
+    before?.detections ?? 'counted',
+  );
+  const [candidates, setCandidates] = useState(before?.candidates);
   const [combination, setCombination] = useState<AnalysisRecipe['combination']>(
-    stored?.definition.rule ?? usual.combination,
+    before?.combination ?? stored?.definition.rule ?? usual.combination,
   );
-  const [sampleId, setSampleId] = useState<string>();
-  const [rate, setRate] = useState<RateSetting>({
-    ...FIRST_RATE,
-    credibleLevel: usual.credibleLevel,
-  });
-  const [zeroOutsideMaps, setZeroOutsideMaps] = useState(false);
-  const [ownName, setOwnName] = useState<string>();
+  const [sampleId, setSampleId] = useState(before?.sampleId);
+  const [rate, setRate] = useState<RateSetting>(
+    before ? rateOf(before) : { ...FIRST_RATE, credibleLevel: usual.credibleLevel },
+  );
+  const [zeroOutsideMaps, setZeroOutsideMaps] = useState(before?.zeroOutsideMaps ?? false);
+  const [ownName, setOwnName] = useState(draft?.name);
+  const editing = useEditing<NameAndRecipe | undefined>(draft);
   const { perform, isBusy, problem } = useAction({ leaves: true });
   const [pressed, setPressed] = useState<'create' | 'run'>();
 
@@ -112,18 +137,46 @@ export function NewAnalysis(props: NewAnalysisProps) {
     if (!checked?.success) return;
     setPressed(andRun ? 'run' : 'create');
     await perform(async () => {
-      const created = await createAnalysis(collaboration, { name, recipe: checked.data });
-      if (andRun) await startRun(collaboration, created.key);
-      router.push(`/${collaboration}/analyses/${created.key}`);
+      const key = await store({ name, recipe: checked.data });
+      if (key === null) return;
+      if (andRun) await startRun(collaboration, key);
+      router.push(`/${collaboration}/analyses/${key}`);
     });
   };
+  /** The key of what was stored; null where somebody else has changed it meanwhile. */
+  const store = async (mine: NameAndRecipe) => {
+    if (draft === undefined) return (await createAnalysis(collaboration, mine)).key;
+    const isStored = await editing.attempt(mine, (opened = draft) =>
+      changeAnalysis(collaboration, draft.key, opened, mine),
+    );
+    return isStored ? draft.key : null;
+  };
+  const take = (now: NameAndRecipe | undefined) => {
+    if (now === undefined) return;
+    const { recipe: theirs } = now;
+    setOwnName(now.name);
+    setChosen(theirs.surveyIds);
+    setPopulationId(theirs.populationId);
+    setDetections(theirs.detections);
+    setCandidates(theirs.candidates);
+    setCombination(theirs.combination);
+    setSampleId(theirs.sampleId);
+    setRate(rateOf(theirs));
+    setZeroOutsideMaps(theirs.zeroOutsideMaps);
+  };
+  // After a conflict the person decides, so nothing is under way.
+  const isUnderWay = isBusy && editing.conflict === null;
 
   return (
     <>
       <PageTitle
-        title="New analysis"
-        crumbs={[{ href: `/${collaboration}/analyses`, label: 'Analyses' }, { label: 'New' }]}
-        context="Four choices; each can be changed later, and each run keeps its own copy of them."
+        title={draft ? `Change ${draft.key}` : 'New analysis'}
+        crumbs={[
+          { href: `/${collaboration}/analyses`, label: 'Analyses' },
+          ...(draft ? [{ href: `/${collaboration}/analyses/${draft.key}`, label: draft.key }] : []),
+          { label: draft ? 'Change' : 'New' },
+        ]}
+        context="Four choices; each can be changed until the first run, and each run keeps its own copy of them."
       />
       <div className="grid gap-x-14 gap-y-8 xl:grid-cols-[1fr_400px]">
         <div className="grid min-w-0 gap-8">
@@ -208,8 +261,22 @@ export function NewAnalysis(props: NewAnalysisProps) {
               maxLength={120}
               onChange={(event) => setOwnName(event.target.value)}
             />
+            {draft && (
+              <ChangedNotice
+                editing={editing}
+                words={(one) =>
+                  one === undefined ? {} : { Name: one.name, ...recipeWords(one.recipe, draft) }
+                }
+                onTake={take}
+                onKeep={() => void create(pressed === 'run')}
+              />
+            )}
             {problem !== undefined && (
-              <Notice tone="bad" title="It was not created." isAnnounced>
+              <Notice
+                tone="bad"
+                title={draft ? 'It was not saved.' : 'It was not created.'}
+                isAnnounced
+              >
                 {problem}
               </Notice>
             )}
@@ -217,17 +284,17 @@ export function NewAnalysis(props: NewAnalysisProps) {
               <Button
                 variant="primary"
                 onClick={() => create(true)}
-                isBusy={isBusy && pressed === 'run'}
+                isBusy={isUnderWay && pressed === 'run'}
                 disabledReason={fault}
               >
-                Create and run
+                {draft ? 'Save and run' : 'Create and run'}
               </Button>
               <Button
                 onClick={() => create(false)}
-                isBusy={isBusy && pressed === 'create'}
+                isBusy={isUnderWay && pressed === 'create'}
                 disabledReason={fault}
               >
-                Create without a run
+                {draft ? 'Save' : 'Create without a run'}
               </Button>
             </div>
           </div>

@@ -70,6 +70,25 @@ export function changeRecipe(
   });
 }
 
+export type NameAndRecipe = Pick<AnalysisView, 'name' | 'recipe'>;
+
+const nameAndRecipe = ({ name, recipe }: NameAndRecipe): NameAndRecipe => ({ name, recipe });
+
+/** Changes name and recipe. @throws ChangedMeanwhile where they are not those that were opened */
+export function changeAnalysis(
+  collaboration: string,
+  key: string,
+  opened: NameAndRecipe,
+  body: NameAndRecipe,
+): Promise<AnalysisView> {
+  return change(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
+    part: nameAndRecipe,
+    opened: nameAndRecipe(opened),
+    body,
+    answer: answer('analysisSchema'),
+  });
+}
+
 export function copyAnalysis(
   collaboration: string,
   key: string,

@@ -7,6 +7,7 @@ import { startRun } from '@/components/hooks/use-runs';
 import { AxisRange, MassRange, PowerLaws } from '@/components/populations/law-notation';
 import { Button } from '@/components/ui/button';
 import { DeleteForGood } from '@/components/ui/delete-for-good';
+import { LinkButton } from '@/components/ui/link-button';
 import { Notice } from '@/components/ui/notice';
 import { Conditions, Plate } from '@/components/ui/plate';
 import {
@@ -105,6 +106,11 @@ export function NoRunPlate({ collaboration, analysis, isOnItsWay, onChanged }: N
               >
                 Run
               </Button>
+              {analysis.can.change && (
+                <LinkButton href={`/${collaboration}/analyses/new?draft=${analysis.key}`}>
+                  Change
+                </LinkButton>
+              )}
               {analysis.can.remove && (
                 <DeleteForGood
                   label="Delete the draft"

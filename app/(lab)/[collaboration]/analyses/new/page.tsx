@@ -1,8 +1,12 @@
 import type { Metadata } from 'next';
+import { notFound } from 'next/navigation';
 import { newestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewAnalysis } from '@/components/analyses/new-analysis';
 import { KnownAnswers } from '@/components/hooks/known-answers';
+import type { Actor } from '@/lib/access/actor';
+import { NotFound } from '@/lib/errors';
+import { getAnalysis } from '@/lib/services/analyses';
 import { listCombinations } from '@/lib/services/combinations';
 import { listPopulations } from '@/lib/services/populations';
 import { listSamples } from '@/lib/services/samples';
@@ -10,6 +14,18 @@ import { newRecipeDefaults } from '@/lib/services/settings';
 import { listSurveys } from '@/lib/services/surveys';
 
 export const metadata: Metadata = { title: 'New analysis' };
+
+/** The draft that the address asks to change. */
+async function findDraft(actor: Actor, key: string | undefined) {
+  if (key === undefined) return undefined;
+  try {
+    const draft = await getAnalysis(actor, key);
+    if (draft.can.change) return draft;
+  } catch (reason) {
+    if (!(reason instanceof NotFound)) throw reason;
+  }
+  return notFound();
+}
 
 export default async function NewAnalysisPage({
   params,
@@ -29,6 +45,8 @@ export default async function NewAnalysisPage({
       newRecipeDefaults(actor.collaborationId),
       searchParams,
     ]);
+  const draft = await findDraft(actor, wanted.draft);
+  const combination = draft ? draft.recipe.combinationId : wanted.combination;
   return (
     <KnownAnswers collaboration={actor.collaboration} answers={{ samples }}>
       <NewAnalysis
@@ -38,7 +56,8 @@ export default async function NewAnalysisPage({
         previewRun={run}
         usual={usual}
         wanted={wanted.population}
-        stored={combinations.find(({ id }) => id === wanted.combination)}
+        stored={combinations.find(({ id }) => id === combination)}
+        draft={draft}
       />
     </KnownAnswers>
   );
