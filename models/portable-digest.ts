@@ -20,10 +20,13 @@ function digestWithoutIds(value: unknown): string {
 
 type Finished = Pick<RunRow, 'recipe' | 'inputs' | 'result'>;
 
-/** Fingerprints of a finished run that do not depend on the ids and the numbers of its database. */
+/**
+ * Fingerprints of a finished run that do not depend on the ids and the numbers of its database, nor
+ * on which engine made its maps: that shows in the result.
+ */
 export function portableDigests({ recipe, inputs, result }: Finished) {
   if (!inputs || !result) throw new Error('a run without a result has no digest');
-  const { population, sample, storedCombination, surveys, ...rest } = inputs;
+  const { population, sample, storedCombination, surveys, mapEngines: _, ...rest } = inputs;
   return {
     portableInputs: digestWithoutIds({
       ...rest,

@@ -41,6 +41,8 @@ import { countStars, SurveyChoice } from './survey-choice';
 interface NewAnalysisProps {
   collaboration: string;
   surveys: SurveyList;
+  /** By slug of the survey. */
+  staleMaps: Readonly<Record<string, number>>;
   populations: ListedPopulation[];
   /** Newest finished run: its maps give the estimate. */
   previewRun: PackedRun | null;
@@ -184,6 +186,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
             <SurveyChoice
               surveys={offered}
               overlaps={surveys.overlaps}
+              staleMaps={props.staleMaps}
               chosen={chosen}
               onChange={setChosen}
               address={`/${collaboration}/surveys`}

@@ -39,7 +39,7 @@ export function FreezeScreen(props: FreezeScreenProps) {
   const { perform, isBusy, problem } = useAction();
   const { run, checks, frozen } = standing;
   const name = `${run.analysisKey}, run ${run.number}`;
-  const isStopped = checks.some(({ isMet, stops }) => stops && !isMet);
+  const stopping = checks.find(({ isMet, stops }) => stops && !isMet);
   const needsReason = checks.some(({ isMet }) => !isMet);
   const freeze = () =>
     perform(async () => setStanding(await freezeRun(collaboration, run.id, reason.trim())));
@@ -109,7 +109,7 @@ export function FreezeScreen(props: FreezeScreenProps) {
               </>
             ) : standing.canFreeze ? (
               <div className="grid gap-3">
-                {needsReason && !isStopped && (
+                {needsReason && !stopping && (
                   <TextAreaField
                     label="Reason"
                     hint="stands in the seal of every release of this run"
@@ -131,8 +131,8 @@ export function FreezeScreen(props: FreezeScreenProps) {
                     isBusy={isBusy}
                     onClick={() => void freeze()}
                     disabledReason={
-                      isStopped
-                        ? 'The inputs have changed: run the analysis again first.'
+                      stopping
+                        ? `${stopping.words}.`
                         : needsReason && reason.trim() === ''
                           ? 'Say why, although a check is not met.'
                           : undefined

@@ -63,6 +63,14 @@ function CheckStep({ release, busy, onStep }: StepsProps) {
             )),
           )}
         </ul>
+        {verification.runs.map(
+          ({ runId, name, cause }) =>
+            cause && (
+              <p key={runId} className="mt-1">
+                {name}: {cause}.
+              </p>
+            ),
+        )}
       </Step>
     );
   }

@@ -29,6 +29,7 @@ export const ChecksStrip = memo(function ChecksStrip(props: ChecksStripProps) {
   const inRun = ofRun === undefined ? '' : `, run ${ofRun}`;
   const hardlySeen = useMemo(() => shareOnMeanMap(map, definition), [map, definition]);
   const words = hardlySeenWords(hardlySeen ?? 0);
+  const olderEngines = (inputs.mapEngines ?? []).filter((made) => made !== inputs.engineVersion);
   const entries = inputs.surveys.reduce((sum, survey) => sum + survey.entries, 0);
   const overlapping = entries - inputs.stars.length;
   return (
@@ -57,6 +58,12 @@ export const ChecksStrip = memo(function ChecksStrip(props: ChecksStripProps) {
       {hardlySeen !== null && hardlySeen >= HARDLY_ANY && (
         <StateMark kind="warn">
           {words.fact}. {words.meaning}.
+        </StateMark>
+      )}
+      {olderEngines.length > 0 && (
+        <StateMark kind="warn">
+          Maps of engine {olderEngines.join(' and ')}, not of {inputs.engineVersion}: refresh them
+          and run again
         </StateMark>
       )}
       {shareFlaggedCooling > 0.0005 && (

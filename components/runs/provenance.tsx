@@ -76,7 +76,7 @@ function provenanceSteps(
     {
       kind: 'Maps',
       what: `${inputs.stars.length} maps, ${massMjup.length} × ${semiMajorAxisAu.length} nodes`,
-      by: inputs.eccentricity,
+      by: `${engineWords(inputs.mapEngines)}, ${inputs.eccentricity}`,
       fingerprint: run.inputsDigest ? fingerprint(run.inputsDigest) : undefined,
     },
     {
@@ -100,6 +100,12 @@ function provenanceSteps(
       fingerprint: run.resultDigest ? fingerprint(run.resultDigest) : undefined,
     },
   ];
+}
+
+/** Which engine made the maps: not always the one that computed the run. */
+function engineWords(engines: string[] | undefined): string {
+  if (!engines) return 'engine of the maps not recorded';
+  return engines.length === 0 ? 'as uploaded' : `maps of engine ${engines.join(' and ')}`;
 }
 
 function leftOutWords(count: number): string | undefined {

@@ -28,7 +28,7 @@ export type Author = z.infer<typeof authorSchema>;
 
 /** One condition of freezing: met, or what is to be said about it. */
 export const freezeCheckSchema = z.object({
-  name: z.enum(['inputs', 'calibration', 'candidates']),
+  name: z.enum(['inputs', 'maps', 'calibration', 'candidates']),
   isMet: z.boolean(),
   /** Not met: a reason is asked for; `stops` means that no reason is enough. */
   stops: z.boolean(),
@@ -81,6 +81,8 @@ export const releaseCheckSchema = z.object({
       /** Where the numbers part, the first few: "answer.limit: 0.0581 stored, 0.0585 again". */
       differences: z.array(z.string()),
       differenceCount: z.number(),
+      /** Why it differs and what helps, where that is known. */
+      cause: z.string().nullable().optional(),
     }),
   ),
   engineVersion: z.string(),

@@ -51,6 +51,8 @@ export const runInputsSchema = z.object({
   cooling: z.string(),
   eccentricity: z.string(),
   threshold: z.string(),
+  /** Versions of the engine that made the computed maps; runs from before this was kept hold none. */
+  mapEngines: z.array(z.string()).optional(),
   /** The selection of stars, where the recipe names one. */
   sample: z
     .object({

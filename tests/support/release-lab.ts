@@ -1,5 +1,6 @@
 import { GET as listFiles } from '@/app/api/v1/collaborations/[collaboration]/runs/[run]/exports/route';
 import type { RouteHandler } from '@/app/api/v1/handler';
+import type { Actor } from '@/lib/access/actor';
 import { type Role, roleSchema } from '@/lib/schemas/common';
 import { exportListSchema } from '@/lib/schemas/exports';
 import { type ReleaseView, releaseSchema } from '@/lib/schemas/releases';
@@ -67,6 +68,7 @@ export interface ReleaseLab {
   second: RunRow;
   /** With the token of the team's member of that role. */
   ask(handler: RouteHandler, given: Asked): Promise<Response>;
+  actor(role: Role): Promise<Actor>;
   /** What a run's files say of its standing. */
   stateOfFiles(run: string): Promise<string>;
 }
@@ -99,6 +101,7 @@ export async function openReleaseLab(): Promise<ReleaseLab> {
     run,
     second,
     ask,
+    actor: (role) => actorOf(people[role], team),
     stateOfFiles: async (id) => {
       const answer = await ask(listFiles, { role: 'student', params: { run: id } });
       return exportListSchema.parse(await answer.json()).state;

@@ -86,6 +86,7 @@ describe('freezing a run', () => {
     );
     expect(standing.checks.map(({ name, isMet }) => [name, isMet])).toEqual([
       ['inputs', true],
+      ['maps', true],
       ['calibration', false],
       ['candidates', false],
     ]);

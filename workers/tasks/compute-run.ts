@@ -16,7 +16,7 @@ import { type MapShelf, tableShelf } from './map-shelf';
 import { treatCandidates, warnCutAndCounted } from './run-candidates';
 import { type MergedCompanions, mergeCompanions } from './run-companions';
 import { hostMassesFor } from './run-hosts';
-import { combineMaps, commonGrid } from './run-maps';
+import { combineMaps, commonGrid, enginesOfMaps } from './run-maps';
 import { assembleResult, countCompanions } from './run-result';
 import { collectSample, type Sample } from './run-sample';
 import { describeShared } from './run-shared';
@@ -190,6 +190,7 @@ function describeInputs(
     })),
     combination: describeCombination(run.recipe.combination, inSeveral, sample.surveys.length),
     ...describeMaps(sample),
+    mapEngines: enginesOfMaps(sample, run.recipe.combination),
     ...(sample.selection && { sample: sample.selection }),
     ...(sample.combination && { storedCombination: sample.combination.words }),
     ...(sample.adopted.length > 0 && { adopted: sample.adopted }),

@@ -11,6 +11,7 @@ import {
 } from '@/lib/sensitivity';
 import type { CompletenessMapRow } from '@/models';
 import { digestOf } from '@/models/digest';
+import { inOrder } from '@/models/engines-of-run';
 import { mapOfRow } from '@/models/map-on-grid';
 import { mapInputs } from '@/models/map-recipe';
 import { buildStarInputs, type OwnCurve } from '@/models/star-inputs';
@@ -113,6 +114,21 @@ function checkRule(
     asking.filter(({ entries }) => !isOneRecipe(entries)),
     'The rule "same position" needs equal map settings in all surveys; they differ for',
   );
+}
+
+/** Versions of the engine behind the computed maps of a sample, the oldest first. */
+export function enginesOfMaps(sample: Sample, asked: AnalysisRecipe['combination']): string[] {
+  const ownRule = ownRules(sample, asked);
+  const isJoint = (star: SampleStar) =>
+    star.entries.length > 1 && (ownRule(star) ?? ruleFor(star, asked)) === 'same-position';
+  const engines = sample.stars.flatMap((star) =>
+    isJoint(star)
+      ? [ENGINE_VERSION]
+      : star.entries
+          .filter(({ map }) => map.origin === 'computed')
+          .map(({ map }) => map.engineVersion),
+  );
+  return inOrder(engines);
 }
 
 interface Combination {

@@ -8,6 +8,7 @@ import { ENGINE_VERSION } from '@/lib/sensitivity';
 import { FrozenRunRow, inTransaction, ReleaseRow, RunRow } from '@/models';
 import { readContent, runsInBundle } from '@/models/bundle-files';
 import { digestOf } from '@/models/digest';
+import { enginesOfRun, refreshWords } from '@/models/engines-of-run';
 import type { Work } from '../perform';
 import { computeBundle } from './bundle-run';
 import { CHECKED_DIGITS, findDifferences } from './run-difference';
@@ -82,5 +83,17 @@ async function verifyRun(
     limit: again.result.answer.limit,
     differences: differences.slice(0, MOST_LISTED),
     differenceCount: differences.length,
+    cause: differences.length === 0 ? null : await engineCause(run),
   };
+}
+
+/** Maps that another engine made are made anew by the check, and differ: which, and what helps. */
+async function engineCause(run: RunRow): Promise<string | null> {
+  const engines = await enginesOfRun(run);
+  if (engines.every((engine) => engine === ENGINE_VERSION)) return null;
+  const surveys = run.inputs?.surveys.map(({ name }) => name) ?? [];
+  return (
+    `Its maps are of engine ${engines.join(' and ')}, and the check makes them with engine ` +
+    `${ENGINE_VERSION}. ${refreshWords(surveys)} and put it into the release in place of this one`
+  );
 }

@@ -20,6 +20,7 @@ export function runProvenance(run: FinishedRun): Provenance {
     ...standing,
     ['software', SOFTWARE],
     ['engine', run.engineVersion],
+    ...(inputs.mapEngines ? [['map_engines', inputs.mapEngines.join(', ')] as const] : []),
     ['analysis', `${run.analysis}, ${run.analysisName}`],
     ['run', `${run.analysis}, run ${run.number}`],
     ...(run.finishedAt === null ? [] : [['computed', run.finishedAt] as const]),

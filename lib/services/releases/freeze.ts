@@ -4,9 +4,19 @@ import { demand, may } from '@/lib/access/permissions';
 import { Conflict, InputError } from '@/lib/errors';
 import { packFiles } from '@/lib/formats/bundle';
 import type { FreezeCheck, FreezeStanding } from '@/lib/schemas/releases';
-import { AnalysisRow, FrozenRunRow, inTransaction, type RunRow, StudyRow } from '@/models';
+import {
+  AnalysisRow,
+  FrozenRunRow,
+  inTransaction,
+  type RunRow,
+  StudyRow,
+  SurveyRow,
+  TargetRow,
+} from '@/models';
 import { writeContent } from '@/models/bundle-files';
 import { sha256Hex } from '@/models/digest';
+import { refreshWords } from '@/models/engines-of-run';
+import { readMapStates } from '@/models/map-standings';
 import { recordAudit } from '../audit';
 import { readRunFacts } from '../run-facts';
 import { findRun } from '../runs';
@@ -47,6 +57,49 @@ function candidateCheck({ inputs, recipe }: RunRow): FreezeCheck {
   };
 }
 
+/**
+ * Whether the maps of a run's stars are what their curves give now: whoever checks a release makes
+ * them anew, and would find other numbers. Uploaded maps are kept as they are.
+ */
+async function mapsCheck({ collaborationId, recipe, inputs }: RunRow): Promise<FreezeCheck> {
+  const { surveyIds } = recipe;
+  const base = { name: 'maps' as const, stops: true };
+  const surveys = await SurveyRow.findAll({
+    where: { collaborationId, id: surveyIds },
+    order: [['position', 'ASC']],
+  });
+  const targets = await TargetRow.findAll({
+    attributes: ['id'],
+    where: {
+      surveyId: surveyIds,
+      starId: inputs?.stars.map(({ starId }) => starId) ?? [],
+      leftOutReason: null,
+    },
+  });
+  const used = new Set(targets.map(({ id }) => id));
+  const statesOf = await readMapStates(surveys);
+  const stale = surveys.flatMap(({ id, name }) => {
+    const states = (statesOf.get(id) ?? []).filter(
+      ({ targetId, standing, reason }) =>
+        used.has(targetId) && standing === 'stale' && reason !== 'uploaded',
+    );
+    return states.length === 0 ? [] : [{ name, states }];
+  });
+  if (stale.length === 0) {
+    return { ...base, isMet: true, words: 'Maps are of the present engine and settings' };
+  }
+  const counts = stale.map(({ name, states }) => {
+    const { target, words } = states[0];
+    return `${states.length} of ${name} (${target}: ${words})`;
+  });
+  const names = stale.map(({ name }) => name);
+  return {
+    ...base,
+    isMet: false,
+    words: `Maps that their curves would not give now: ${counts.join(', ')}. ${refreshWords(names)}`,
+  };
+}
+
 async function checksOf(run: RunRow): Promise<FreezeCheck[]> {
   const facts = (await readRunFacts([run.analysisId])).find(({ id }) => id === run.id);
   const isMet = facts !== undefined && !facts.hasOlderInputs;
@@ -56,7 +109,7 @@ async function checksOf(run: RunRow): Promise<FreezeCheck[]> {
     stops: true,
     words: isMet ? 'Inputs unchanged since the run' : CHANGED,
   };
-  return [inputs, await calibrationCheck(run), candidateCheck(run)];
+  return [inputs, await mapsCheck(run), await calibrationCheck(run), candidateCheck(run)];
 }
 
 const folderOf = (analysis: AnalysisRow, run: RunRow) => `A-${analysis.number}-run-${run.number}`;
