@@ -8,7 +8,7 @@ const drawings = [
   { name: 'posterior.pdf', label: 'Posterior, PDF' },
 ];
 
-/** Files made from a finished run; each says that it is a draft. */
+/** Files made from a finished run; each says how the run stands. */
 export function ExportMenu({ collaboration, run }: { collaboration: string; run: RunSummary }) {
   return (
     <ExportButton

@@ -58,10 +58,15 @@ export interface FinishedRun {
   engineVersion: string;
 }
 
-/** Every file of a run that nobody froze says so. */
+/** Whether a run may still change, as each of its files says it. */
 export function stateOf({ release, isFrozen }: Pick<FinishedRun, 'release' | 'isFrozen'>): string {
   if (release) return `release ${release.version}: ${release.title}`;
   return isFrozen ? 'frozen' : 'draft';
+}
+
+/** The same with the run's number, "draft, run 18", where the release does not name it. */
+export function standingOf(run: Pick<FinishedRun, 'release' | 'isFrozen' | 'number'>): string {
+  return run.release ? stateOf(run) : `${stateOf(run)}, run ${run.number}`;
 }
 
 type Quantity = RunResult['quantity'];
@@ -248,7 +253,7 @@ export function writeLimitsTable(run: FinishedRun, style: LatexStyle): string {
     notes: [
       run.release
         ? `${run.release.title}, version ${run.release.version}, ${run.release.licence}, ${run.release.address}.`
-        : `Draft, run ${run.number}: not frozen.`,
+        : `${run.isFrozen ? 'Frozen' : 'Draft'}, run ${run.number}: ${run.isFrozen ? 'not published' : 'not frozen'}.`,
       `${describePopulation(population)}.`,
       `${result.stars} stars, ${found} companions counted (${countingRule(run, false, result.quantity)}).`,
       `Surveys: ${inputs.surveys.map(({ name }) => name).join(', ')}.`,

@@ -5,7 +5,7 @@ import type { ExportList } from '@/lib/schemas/exports';
 import { runResultSchema } from '@/lib/schemas/runs';
 import { AnalysisRow, inTransaction, PopulationRow } from '@/models';
 import { recordAudit } from './audit';
-import { type FinishedRun, stateOf } from './export-limits';
+import { type FinishedRun, standingOf, stateOf } from './export-limits';
 import {
   type AskedOptions,
   defaultOptions,
@@ -96,7 +96,7 @@ export async function listExports(actor: Actor, id: string): Promise<ExportList>
     files.push({ ...file, byteLength: size });
   }
   return {
-    state: run.release ? stateOf(run) : `${stateOf(run)}, run ${run.number}`,
+    state: standingOf(run),
     files: [...files, { ...EVERYTHING, byteLength: null }],
     missing: [
       {

@@ -51,7 +51,7 @@ describe('posteriorFigureSvg', () => {
   });
 
   it('says draft when it is one, and not otherwise', () => {
-    expect(words(buildFigure({ draftLabel: 'draft, run 18' }))).toContain('draft, run 18');
+    expect(words(buildFigure({ standing: 'draft, run 18' }))).toContain('draft, run 18');
     expect(words(buildFigure())).not.toContain('draft');
   });
 

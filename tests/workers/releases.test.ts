@@ -318,7 +318,7 @@ describe('a bundle', () => {
     return bringIn(request, { params: Promise.resolve({ collaboration }) });
   };
 
-  it('is the same bytes each time, and says that it is a draft', async () => {
+  it('is the same bytes each time, and says that its run is frozen, with the digest of what was kept', async () => {
     const take = async () =>
       Buffer.from(
         await (await ask(getBundle, { role: 'student', params: { run: run.id } })).arrayBuffer(),
@@ -326,7 +326,11 @@ describe('a bundle', () => {
     draft = await take();
     expect(sha256Hex(await take())).toBe(sha256Hex(draft));
     const files = await unpackFiles(draft);
-    expect(files.get('README.txt')?.toString('utf8')).toContain('Draft, run 1');
+    const frozen = await FrozenRunRow.findOne({ where: { runId: run.id }, rejectOnEmpty: true });
+    const readme = files.get('README.txt')?.toString('utf8');
+    expect(readme).toContain('Frozen, run 1, kept with its inputs for good');
+    expect(readme).toContain(frozen.snapshotSha256);
+    expect(files.get('CITATION.bib')?.toString('utf8')).toContain('frozen, run 1');
   });
 
   it('gives the same answer beside its origin, under ids of its own', async () => {

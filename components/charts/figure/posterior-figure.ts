@@ -25,7 +25,7 @@ export interface PosteriorFigureInputs {
   /** One column or two. */
   widthMm: 88 | 180;
   /** Prints the word draft into the drawing: "draft, run 18". */
-  draftLabel?: string;
+  standing?: string;
 }
 
 /** Light tokens, written out: a figure lives outside the product. */
@@ -115,8 +115,8 @@ export function posteriorScene(inputs: PosteriorFigureInputs): Scene {
   drawAxis(shapes, text, inputs, frame, x, max);
 
   text(frame.left, 10, 'posterior density', { fill: colours.ink3 });
-  if (inputs.draftLabel) {
-    text(frame.right, 10, inputs.draftLabel, { anchor: 'end', weight: 600, fill: colours.ink });
+  if (inputs.standing) {
+    text(frame.right, 10, inputs.standing, { anchor: 'end', weight: 600, fill: colours.ink });
   }
   drawBound(shapes, text, inputs, frame, x);
   const beside = x(limit) + 6;

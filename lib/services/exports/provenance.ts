@@ -1,5 +1,5 @@
 import type { WrittenTable } from '@/lib/formats';
-import { type FinishedRun, stateOf } from '../export-limits';
+import { type FinishedRun, standingOf } from '../export-limits';
 import { SOFTWARE } from './software';
 
 type Provenance = WrittenTable['provenance'];
@@ -15,7 +15,7 @@ export function runProvenance(run: FinishedRun): Provenance {
         ['address', release.address],
         ['authors', release.authors.map(({ name }) => name).join(', ')],
       ]
-    : [['state', `${stateOf(run)}, run ${run.number}`]];
+    : [['state', standingOf(run)]];
   return [
     ...standing,
     ['software', SOFTWARE],

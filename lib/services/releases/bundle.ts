@@ -109,7 +109,7 @@ function writeReadme(facts: BundleFacts, runs: readonly BundledRun[]): string {
 export interface BundleFacts {
   name: string;
   description: string;
-  /** "Draft, run 18.", "Release R-4." */
+  /** "Draft, run 18: …", "Frozen, run 18, …", "Release R-4." */
   state: string;
   datePublished: string;
   licence: Licence | null;
@@ -120,7 +120,7 @@ export interface BundleFacts {
 
 const licenceOf = (licence: Licence | null) =>
   licence === null
-    ? { id: '#no-licence', name: 'No licence is stated: this is a draft' }
+    ? { id: '#no-licence', name: 'No licence is stated: this is not a release' }
     : { id: licences[licence], name: licence };
 
 /** The archive: the same bytes whenever it is made of the same release. */

@@ -5,7 +5,7 @@ import { type BundleRecipe, bundleRecipeSchema } from '@/lib/schemas/bundles';
 import { AnalysisRow, FrozenRunRow, inTransaction } from '@/models';
 import { runsInBundle, writeContent } from '@/models/bundle-files';
 import { recordAudit } from '../audit';
-import type { ReleaseFacts } from '../export-limits';
+import { type ReleaseFacts, standingOf } from '../export-limits';
 import { getFinishedRun } from '../exports';
 import { findRun } from '../runs';
 import { type BundledRun, writeBundle } from './bundle';
@@ -41,7 +41,7 @@ export async function bundledRun(
   const { run: made } = readRecipe(content);
   return {
     folder: `${finished.analysis}-run-${finished.number}`,
-    run: { ...finished, release },
+    run: { ...finished, release: release ?? finished.release },
     by: made.by,
     startedAt: made.startedAt,
     content,
@@ -63,8 +63,23 @@ async function draftContent(actor: Actor, runId: string): Promise<Map<string, Bu
   return writeContent(content);
 }
 
-/** The bundle of any finished run; it says that it is a draft, also where the run is frozen. */
-export async function exportDraftBundle(actor: Actor, runId: string) {
+/** What the bundle of one run says of its standing; of a frozen one with the digest of what was kept. */
+async function bundleState({ run }: BundledRun): Promise<string> {
+  const { release, number } = run;
+  if (!run.isFrozen) return `Draft, run ${number}: it may change, and nobody has agreed to it.`;
+  const frozen = await FrozenRunRow.findOne({
+    attributes: ['snapshotSha256'],
+    where: { runId: run.id },
+    rejectOnEmpty: true,
+  });
+  const kept = `kept with its inputs for good (SHA-256 of what was kept: ${frozen.snapshotSha256})`;
+  return release
+    ? `Frozen, run ${number}, ${kept}, and published as ${standingOf(run)}, ${release.address}.`
+    : `Frozen, run ${number}, ${kept}; it is not published.`;
+}
+
+/** The bundle of any finished run, which says how the run stands. */
+export async function exportRunBundle(actor: Actor, runId: string) {
   const bundled = await bundledRun(actor, runId);
   const { run, folder } = bundled;
   const name = `${run.analysisName} (${run.analysis}, run ${run.number})`;
@@ -74,7 +89,7 @@ export async function exportDraftBundle(actor: Actor, runId: string) {
     {
       name,
       description: `${run.result.statement.sentence}.`,
-      state: `Draft, run ${run.number}: it may change, and nobody has agreed to it.`,
+      state: await bundleState(bundled),
       datePublished: at.slice(0, 10),
       licence: null,
       authors: [author],
@@ -83,14 +98,14 @@ export async function exportDraftBundle(actor: Actor, runId: string) {
         title: name,
         authors: [author],
         year: Number(at.slice(0, 4)),
-        version: `draft, run ${run.number}`,
+        version: standingOf(run),
         fingerprint: run.resultDigest,
-        address: 'unpublished',
+        address: run.release?.address ?? 'unpublished',
       }),
     },
     [bundled],
   );
-  const fileName = `${folder}-draft.zip`;
+  const fileName = `${folder}-${run.isFrozen ? 'frozen' : 'draft'}.zip`;
   await inTransaction((transaction) =>
     recordAudit(actor, 'export', { kind: 'run', id: runId }, `exported ${fileName}`, transaction),
   );

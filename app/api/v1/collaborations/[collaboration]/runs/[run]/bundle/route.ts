@@ -1,9 +1,9 @@
 import { collaborationRoute } from '@/app/api/v1/handler';
-import { exportDraftBundle } from '@/lib/services/releases/bundled-runs';
+import { exportRunBundle } from '@/lib/services/releases/bundled-runs';
 
-/** Everything that a finished run rests on, as one archive; it says that it is a draft. */
+/** Everything that a finished run rests on, as one archive; it says how the run stands. */
 export const GET = collaborationRoute({ scope: 'read' }, async ({ actor, params }) => {
-  const { fileName, bytes } = await exportDraftBundle(actor, params.run);
+  const { fileName, bytes } = await exportRunBundle(actor, params.run);
   return new Response(new Uint8Array(bytes), {
     headers: {
       'Content-Type': 'application/zip',

@@ -2,7 +2,7 @@ import { posteriorFigureSvg } from '@/components/charts/figure/posterior-figure'
 import type { RateCurve } from '@/components/charts/rate-curve';
 import { describePrior } from '@/lib/inference';
 import type { RateAnswer } from '@/lib/schemas/runs';
-import type { FinishedRun } from '@/lib/services/export-limits';
+import { type FinishedRun, standingOf, stateOf } from '@/lib/services/export-limits';
 
 const curveOf = ({ curve }: RateAnswer): RateCurve => ({
   rate: Float64Array.from(curve.value),
@@ -36,13 +36,13 @@ export function drawPosterior(run: FinishedRun, widthMm: 88 | 180): string {
     title: `Posterior of ${name}`,
     description: result.statement.sentence,
     caption: [
-      `${name}, draft.`,
+      `${name}, ${stateOf(run)}.`,
       `${result.statement.sentence}.`,
       `${surveys}: ${result.stars} stars.`,
       ...result.statement.conditions.map((condition) => `${condition}.`),
       `SHA-256 ${run.resultDigest}`,
     ].join(' '),
     widthMm,
-    draftLabel: `draft, run ${run.number}`,
+    standing: run.release ? `release ${run.release.version}, ${name}` : standingOf(run),
   });
 }
