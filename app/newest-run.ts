@@ -19,11 +19,21 @@ export async function newestRunOf(actor: Actor, analysis: AnalysisView) {
   return { run, runPopulation: (used && populations?.get(used)) || null };
 }
 
-/** The run that finished last in the whole collaboration: its maps serve previews and estimates. */
-export async function newestRun(actor: Actor): Promise<PackedRun | null> {
-  const { analyses } = await listAnalyses(actor);
-  const [newest] = analyses
+/** The finished run with the most stars, the one that ended last of equals. */
+export function findWidest<Of extends Pick<AnalysisView, 'runs'>>(analyses: Of[]) {
+  const [widest] = analyses
     .flatMap((analysis) => analysis.runs.filter(isFinished).map((run) => ({ analysis, run })))
-    .sort((a, b) => (b.run.finishedAt ?? '').localeCompare(a.run.finishedAt ?? ''));
-  return newest ? drawnRun(actor, newest.analysis, newest.run) : null;
+    .sort(
+      (a, b) =>
+        (b.run.stars ?? 0) - (a.run.stars ?? 0) ||
+        (b.run.finishedAt ?? '').localeCompare(a.run.finishedAt ?? ''),
+    );
+  return widest;
+}
+
+/** The widest run of the whole collaboration: its maps serve previews and estimates. */
+export async function widestRun(actor: Actor): Promise<PackedRun | null> {
+  const { analyses } = await listAnalyses(actor);
+  const widest = findWidest(analyses);
+  return widest ? drawnRun(actor, widest.analysis, widest.run) : null;
 }

@@ -19,7 +19,7 @@ import { listNames } from './name-words';
 
 interface EstimateProps {
   collaboration: string;
-  /** Newest finished run of the collaboration. */
+  /** The finished run of the collaboration with the most stars. */
   run: DrawnRun | null;
   surveys: SurveyView[];
   /** Stars of these surveys, each once. */
@@ -58,6 +58,7 @@ export function Estimate(props: EstimateProps) {
     <p className="text-ink2 text-note">
       About this, for planets of <MassRange definition={definition} /> at{' '}
       <AxisRange definition={definition} />. From the maps of {run?.analysis.key}, run {run?.number}
+      {run?.result && ` (${run.result.stars} stars)`}
       {missing.length > 0 &&
         `; ${listNames(missing.map((survey) => survey.name))} did not take part in it`}
       {withoutMap > 0 &&
@@ -83,7 +84,7 @@ export function Estimate(props: EstimateProps) {
       ) : isPending && known && run && !needsRun && surveys.length > 0 ? (
         <>
           <p className="sr-only" aria-live="polite">
-            Fetching the maps of the newest run.
+            Fetching the maps of {run.analysis.key}, run {run.number}.
           </p>
           <EstimateFacts credibleLevel={known.credibleLevel} />
           {about(known.definition)}
@@ -158,9 +159,9 @@ function estimateWords(state: {
     return 'No run has finished in this collaboration yet, so there are no maps at hand to estimate from. The first run computes the limit itself.';
   }
   if (state.error !== undefined) return `No estimate: ${state.error}`;
-  if (state.isLoading) return 'Fetching the maps of the newest run.';
+  if (state.isLoading) return 'Fetching the maps of an earlier run.';
   if (state.refusal !== undefined) return `No estimate: ${state.refusal}.`;
   if (!state.hasSurveys) return 'Choose a survey to see what it would give.';
   if (state.isUnconstrained) return 'The stored maps see nothing of this population.';
-  return 'The maps of the newest run give no limit for these choices: they do not cover these stars or this population.';
+  return 'The maps of the run with the most stars give no limit for these choices: they do not cover these stars or this population.';
 }

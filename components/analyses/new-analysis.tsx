@@ -44,7 +44,7 @@ interface NewAnalysisProps {
   /** By slug of the survey. */
   staleMaps: Readonly<Record<string, number>>;
   populations: ListedPopulation[];
-  /** Newest finished run: its maps give the estimate. */
+  /** Finished run with the most stars: its maps give the estimate. */
   previewRun: PackedRun | null;
   /** Population asked for in the address. */
   wanted?: string;

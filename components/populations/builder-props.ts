@@ -9,7 +9,7 @@ export interface PopulationBuilderProps {
   versions: ListedPopulation[];
   /** The version that is shown. */
   version?: ListedPopulation;
-  /** Newest finished run: its maps carry the preview. */
+  /** Finished run with the most stars: its maps carry the preview. */
   previewRun: PackedRun | null;
   canShare: boolean;
   query: Query;

@@ -15,7 +15,7 @@ export interface Preview {
   sample: LiveSample;
   /** Mean completeness over all stars. */
   map: MapData;
-  /** "A-31, run 18": whose maps these are. */
+  /** "A-31, run 18, 94 stars": whose maps these are. */
   source: string;
 }
 
@@ -27,7 +27,7 @@ export interface PreviewState {
   isFetchingMasses: boolean;
 }
 
-/** Maps of the newest run, with the masses of its stars where the population asks for them. */
+/** Maps of a run, with the masses of its stars where the population asks for them. */
 export function usePreview(
   collaboration: string,
   run: DrawnRun | null,
@@ -44,7 +44,7 @@ export function usePreview(
         semiMajorAxisAu: maps.semiMajorAxisAu,
         completeness: Float64Array.from(run.result.meanMap.completeness.flat()),
       },
-      source: `${run.analysis.key}, run ${run.number}`,
+      source: `${run.analysis.key}, run ${run.number}, ${run.result.stars} stars`,
     };
   }, [maps, run]);
   const preview = useMemo<Preview | undefined>(() => {

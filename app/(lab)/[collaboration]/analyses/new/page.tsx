@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
-import { newestRun } from '@/app/newest-run';
+import { widestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { NewAnalysis } from '@/components/analyses/new-analysis';
 import { KnownAnswers } from '@/components/hooks/known-answers';
@@ -40,7 +40,7 @@ export default async function NewAnalysisPage({
     await Promise.all([
       listSurveys(actor),
       listPopulations(actor),
-      newestRun(actor),
+      widestRun(actor),
       listCombinations(actor),
       listSamples(actor),
       newRecipeDefaults(actor.collaborationId),

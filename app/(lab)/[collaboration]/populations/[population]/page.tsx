@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
-import { newestRun } from '@/app/newest-run';
+import { widestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { askedSetting } from '@/components/populations/asked-setting';
 import { PopulationBuilder } from '@/components/populations/population-builder';
@@ -21,7 +21,7 @@ export default async function PopulationPage({ params, searchParams }: PageProps
   const actor = await currentActor(collaboration);
   const [{ populations }, run, query] = await Promise.all([
     listPopulations(actor),
-    newestRun(actor),
+    widestRun(actor),
     searchParams,
   ]);
   const versions = populations.filter((population) => population.key === key);

@@ -1,5 +1,5 @@
 import type { Metadata } from 'next';
-import { newestRun } from '@/app/newest-run';
+import { widestRun } from '@/app/newest-run';
 import { currentActor } from '@/app/session';
 import { askedSetting } from '@/components/populations/asked-setting';
 import { PopulationBuilder } from '@/components/populations/population-builder';
@@ -20,7 +20,7 @@ export default async function NewPopulationPage({
     <PopulationBuilder
       collaboration={actor.collaboration}
       versions={[]}
-      previewRun={await newestRun(actor)}
+      previewRun={await widestRun(actor)}
       canShare={may(actor, 'share-population')}
       query={query}
       asked={askedSetting(query, undefined)}
