@@ -1,4 +1,4 @@
-import type { RateQuantity, StatedCandidates } from '@/lib/inference';
+import { type RateQuantity, type StatedCandidates, setAside } from '@/lib/inference';
 import { isInside } from '@/lib/population';
 import type { DrawnInputs, DrawnResult } from '@/lib/schemas/runs';
 import type { AgesCoolingAnswer } from '@/lib/schemas/studies';
@@ -119,20 +119,9 @@ export function showResult(
   };
 }
 
-function setAside(
-  inputs: DrawnInputs,
-  isPossible: (one: DrawnInputs['undecided'][number]) => boolean,
-): StatedCandidates | undefined {
-  if (inputs.undecided.length === 0) return undefined;
-  const entries = inputs.undecided
-    .filter(isPossible)
-    .map(({ name, probability = null }) => ({ name, probability }));
-  return { treatment: 'set-aside', entries };
-}
-
 /** Candidates without an answer, and what the run itself did with them. */
 export function storedCandidates(inputs: DrawnInputs, { candidates }: DrawnResult) {
-  return candidates ?? setAside(inputs, ({ insideRanges }) => insideRanges !== false);
+  return candidates ?? setAside(inputs.undecided);
 }
 
 /** By the present ranges, where a candidate's place is known. */
@@ -145,7 +134,7 @@ function liveCandidates(
     const referenceRate = candidates.treatment === 'fixed' ? null : candidates.referenceRate;
     return { treatment: candidates.treatment, referenceRate, entries: counted };
   }
-  return setAside(inputs, ({ massMjup, semiMajorAxisAu, insideRanges }) =>
+  return setAside(inputs.undecided, ({ massMjup, semiMajorAxisAu, insideRanges }) =>
     massMjup == null || semiMajorAxisAu == null
       ? insideRanges !== false
       : isInside(definition, massMjup, semiMajorAxisAu),

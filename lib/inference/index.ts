@@ -101,6 +101,7 @@ export {
   countsAnything,
   describeBackground,
   describeCandidates,
+  setAside,
 } from './open-candidates';
 export type { OverlapBracket } from './overlap-bracket';
 export { overlapBracket } from './overlap-bracket';

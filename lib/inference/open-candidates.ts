@@ -96,6 +96,26 @@ export const countsAnything = (
   counted.length > 0 ||
   (candidates != null && candidates.treatment !== 'set-aside' && candidates.entries.length > 0);
 
+/** A candidate without an answer, as the inputs of a run keep it. */
+export interface KeptCandidate {
+  name: string;
+  probability?: number | null;
+  /** null: not known. */
+  insideRanges: boolean | null;
+}
+
+/** Candidates that no limit counts: those that may lie in the ranges; undefined: there are none at all. */
+export function setAside<Kept extends KeptCandidate>(
+  undecided: readonly Kept[],
+  isPossible = (one: Kept): boolean => one.insideRanges !== false,
+): StatedCandidates | undefined {
+  if (undecided.length === 0) return undefined;
+  const entries = undecided
+    .filter(isPossible)
+    .map(({ name, probability = null }) => ({ name, probability }));
+  return { treatment: 'set-aside', entries };
+}
+
 const named = (entries: StatedCandidates['entries']) =>
   entries
     .map(({ name, probability }) =>

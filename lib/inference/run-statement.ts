@@ -1,7 +1,7 @@
 import type { Population } from '@/lib/population';
 import type { RateQuantity } from '@/lib/quantities/display';
 import type { RatePrior } from './contract';
-import type { StatedCandidates } from './open-candidates';
+import { type KeptCandidate, type StatedCandidates, setAside } from './open-candidates';
 import { priorFor } from './prior-for';
 import { type Condition, priorTop } from './statement';
 import type { DocumentInputs, StatedRun } from './statement-document';
@@ -24,6 +24,7 @@ export interface RunToState {
     eccentricity: string;
     threshold: string;
     surveys: readonly { name: string }[];
+    undecided: readonly KeptCandidate[];
   };
   result: {
     quantity: RateQuantity;
@@ -111,6 +112,7 @@ export function stateRun(stated: RunToState, choice: StatedChoice = {}): Documen
   const hosts = new Set(result.counted.map(({ starId }) => starId)).size;
   const found = quantity === 'host_fraction' ? hosts : result.counted.length;
   const detections = isZero || recipe.detections === 'none' ? 0 : found;
+  const candidates = (isZero ? null : result.candidates) ?? setAside(inputs.undecided);
   const hasInterval = quantity === result.quantity && detections > 0;
   return {
     state: 'recorded',
@@ -135,7 +137,7 @@ export function stateRun(stated: RunToState, choice: StatedChoice = {}): Documen
     constrained: answer.isConstrained,
     setByPrior: isOwn ? answer.isSetByPrior : limit > 0.9 * level * priorTop(prior, quantity),
     cutAt: quantity === result.quantity ? result.priorCutAt : null,
-    ...(result.candidates && !isZero && { candidates: result.candidates }),
+    ...(candidates && { candidates }),
     background: quantity === 'companions_per_star' ? result.background : null,
     ...(hasInterval && {
       interval: {

@@ -6,6 +6,7 @@ import {
   type OpenCandidate,
   type RateQuestion,
   type StatedCandidates,
+  setAside,
 } from '@/lib/inference';
 import type { Population } from '@/lib/population';
 import { listFirst } from '@/lib/queue/preconditions';
@@ -41,14 +42,6 @@ function refused(reason: unknown): unknown {
     : reason;
 }
 
-function stateOpen(inputs: RunInputs): StatedCandidates | undefined {
-  if (inputs.undecided.length === 0) return undefined;
-  const entries = inputs.undecided
-    .filter(({ insideRanges }) => insideRanges !== false)
-    .map(({ name, probability = null }) => ({ name, probability }));
-  return { treatment: 'set-aside', entries };
-}
-
 /**
  * Which candidates count, by the recipe.
  *
@@ -62,7 +55,7 @@ export function treatCandidates(
 ): RunCandidates {
   const { candidates, detections } = recipe;
   if (!candidates || detections === 'none') {
-    return { treatment: undefined, counted: [], kept: null, stated: stateOpen(inputs) };
+    return { treatment: undefined, counted: [], kept: null, stated: setAside(inputs.undecided) };
   }
   const open = openCandidatesOf(inputs);
   let counted: CountedCandidate[];

@@ -37,6 +37,7 @@ function buildRun(overrides: Partial<RunToState['result']> = {}): RunToState {
       eccentricity: 'circular',
       threshold: 'smooth, 5 σ',
       surveys: [{ name: 'Reef_50% & more' }],
+      undecided: [],
     },
     result: {
       quantity: 'host_fraction',
@@ -130,6 +131,28 @@ describe('stateRun', () => {
     expect(other.countingRule).toBe('all detections set aside');
     expect(stated(run, { level: 0.68, quantity: 'companions_per_star' }).detections).toBe(3);
     expect(stateRun(run, { level: 0.9 })).toBeNull();
+  });
+
+  it('names the candidates that it sets aside, as every other statement of the run does', () => {
+    const run = buildRun();
+    run.inputs.undecided = [
+      { name: 'RB 0003 cc1', probability: 0.35, insideRanges: true },
+      { name: 'RB 0004 cc1', probability: 0.2, insideRanges: false },
+    ];
+    const words = 'Candidates: set aside, though not settled: RB 0003 cc1 (0.35).';
+    const document = limitDocument(stated(run));
+    expect(limitAsText(document)).toContain(words);
+    expect(limitAsLatex(document)).toContain('RB 0003 cc1 (0.35)');
+    expect(document.conditions).toContainEqual({
+      label: 'Candidates',
+      text: 'set aside, though not settled: RB 0003 cc1 (0.35)',
+    });
+    const entries = [{ name: 'RB 0003 cc1', probability: 0.35 }];
+    const counting = { ...run.result, candidates: { treatment: 'fixed' as const, entries } };
+    const counted = limitDocument(stated({ ...run, result: counting }));
+    expect(limitAsText(counted)).toContain('1 counts with the probability of being real');
+    const none = limitDocument(stated({ ...run, result: counting }, { detections: 'none' }));
+    expect(limitAsText(none)).toContain(words);
   });
 
   it('has no limit of a quantity that the prior does not speak of', () => {
