@@ -31,6 +31,7 @@ import { CombinationChoice } from './combination-choice';
 import { CombinationLine, isSameCombination } from './combination-line';
 import { DetectionsChoice } from './detections-choice';
 import { Estimate } from './estimate';
+import { ReportFault, useFaultyFields } from './faulty-fields';
 import { suggestName } from './name-words';
 import { tallyOpen } from './open-candidates';
 import { PopulationChoice } from './population-choice';
@@ -133,10 +134,13 @@ export function NewAnalysis(props: NewAnalysisProps) {
     ...(candidates && detections === 'counted' && { candidates }),
   };
   const checked = useSchema(loadSchema)?.safeParse(recipe);
-  const fault = checked ? faultWords(checked.error?.issues[0], name) : CHECKS_COME;
+  const faulty = useFaultyFields();
+  const fault = checked
+    ? (faulty.words ?? faultWords(checked.error?.issues[0], name))
+    : CHECKS_COME;
 
   const create = async (andRun: boolean) => {
-    if (!checked?.success) return;
+    if (!checked?.success || fault !== undefined) return;
     setPressed(andRun ? 'run' : 'create');
     await perform(async () => {
       const key = await store({ name, recipe: checked.data });
@@ -170,7 +174,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
   const isUnderWay = isBusy && editing.conflict === null;
 
   return (
-    <>
+    <ReportFault value={faulty.report}>
       <PageTitle
         title={draft ? `Change ${draft.key}` : 'New analysis'}
         crumbs={[
@@ -303,7 +307,7 @@ export function NewAnalysis(props: NewAnalysisProps) {
           </div>
         </aside>
       </div>
-    </>
+    </ReportFault>
   );
 }
 

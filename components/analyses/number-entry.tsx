@@ -1,9 +1,12 @@
 'use client';
 
-import { type ComponentProps, useState } from 'react';
+import { type ComponentProps, useContext, useState } from 'react';
 import { NumberField } from '@/components/ui/number-field';
+import { ReportFault, useFault } from './faulty-fields';
 
-interface NumberEntryProps extends Omit<ComponentProps<typeof NumberField>, 'onChange' | 'value'> {
+interface NumberEntryProps
+  extends Omit<ComponentProps<typeof NumberField>, 'label' | 'onChange' | 'value'> {
+  label: string;
   value: number;
   /** What makes no sense yet is kept in the field and not passed on. */
   isAllowed(value: number): boolean;
@@ -22,6 +25,7 @@ export function NumberEntry({ value, isAllowed, expected, onValue, ...field }: N
   }
   const typed = text.trim() === '' ? Number.NaN : Number(text);
   const isFine = Number.isFinite(typed) && isAllowed(typed);
+  useFault(useContext(ReportFault), isFine ? undefined : `${field.label}: ${expected}`);
   return (
     <NumberField
       {...field}
