@@ -42,8 +42,6 @@ import { countStars, SurveyChoice } from './survey-choice';
 interface NewAnalysisProps {
   collaboration: string;
   surveys: SurveyList;
-  /** By slug of the survey. */
-  staleMaps: Readonly<Record<string, number>>;
   populations: ListedPopulation[];
   /** Finished run with the most stars: its maps give the estimate. */
   previewRun: PackedRun | null;
@@ -190,7 +188,6 @@ export function NewAnalysis(props: NewAnalysisProps) {
             <SurveyChoice
               surveys={offered}
               overlaps={surveys.overlaps}
-              staleMaps={props.staleMaps}
               chosen={chosen}
               onChange={setChosen}
               address={`/${collaboration}/surveys`}

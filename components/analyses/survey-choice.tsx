@@ -10,8 +10,6 @@ import type { SurveyList, SurveyView } from '@/lib/schemas/surveys';
 interface SurveyChoiceProps {
   surveys: SurveyView[];
   overlaps: SurveyList['overlaps'];
-  /** By slug: maps that are not what their curves would give now. */
-  staleMaps: Readonly<Record<string, number>>;
   chosen: string[];
   onChange(ids: string[]): void;
   /** Where surveys are made. */
@@ -52,7 +50,7 @@ export function SurveyChoice(props: SurveyChoiceProps) {
               survey={survey}
               chosen={chosen}
               onChange={onChange}
-              hint={surveyWords(survey, props.staleMaps[survey.slug] ?? 0)}
+              hint={surveyWords(survey)}
             />
           ))}
           <p className="mt-1 text-ink3 text-note">
@@ -73,15 +71,12 @@ export function countStars(overlaps: SurveyList['overlaps'], picked: SurveyView[
     .reduce((sum, set) => sum + set.stars, 0);
 }
 
-export function surveyWords(
-  survey: Pick<SurveyView, 'maps' | 'targets' | 'band'>,
-  stale: number,
-): string {
-  const { ready, waiting, failed } = survey.maps;
+export function surveyWords(survey: Pick<SurveyView, 'maps' | 'targets' | 'band'>): string {
+  const { ready, waiting, failed, stale } = survey.maps;
   const missing = survey.targets - ready;
   const parts = [`${survey.targets} targets in ${survey.band}`];
   parts.push(missing === 0 ? 'all maps ready' : `${ready} maps ready`);
-  if (stale > 0) parts.push(`${stale} of them stale: refresh them first (survey, Maps)`);
+  if (stale) parts.push(`${stale} of them stale: refresh them first (survey, Maps)`);
   if (waiting > 0) parts.push(`${waiting} being computed`);
   if (failed > 0) parts.push(`${failed} failed`);
   return parts.join(', ');

@@ -8,7 +8,6 @@ import type { Actor } from '@/lib/access/actor';
 import { NotFound } from '@/lib/errors';
 import { getAnalysis } from '@/lib/services/analyses';
 import { listCombinations } from '@/lib/services/combinations';
-import { readMapStore } from '@/lib/services/maps';
 import { listPopulations } from '@/lib/services/populations';
 import { listSamples } from '@/lib/services/samples';
 import { newRecipeDefaults } from '@/lib/services/settings';
@@ -36,7 +35,7 @@ export default async function NewAnalysisPage({
   searchParams: Promise<Record<string, string | undefined>>;
 }) {
   const actor = await currentActor((await params).collaboration);
-  const [surveys, { populations }, run, { combinations }, { samples }, usual, store, wanted] =
+  const [surveys, { populations }, run, { combinations }, { samples }, usual, wanted] =
     await Promise.all([
       listSurveys(actor),
       listPopulations(actor),
@@ -44,7 +43,6 @@ export default async function NewAnalysisPage({
       listCombinations(actor),
       listSamples(actor),
       newRecipeDefaults(actor.collaborationId),
-      readMapStore(actor),
       searchParams,
     ]);
   const draft = await findDraft(actor, wanted.draft);
@@ -54,9 +52,6 @@ export default async function NewAnalysisPage({
       <NewAnalysis
         collaboration={actor.collaboration}
         surveys={surveys}
-        staleMaps={Object.fromEntries(
-          store.surveys.map(({ slug, standings }) => [slug, standings.stale]),
-        )}
         populations={populations}
         previewRun={run}
         usual={usual}
