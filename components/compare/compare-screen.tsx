@@ -14,10 +14,12 @@ import { type CompareSide, comparedRun } from './compared-run';
 import { CopyLink } from './copy-link';
 import { type ComparedInput, type ComparedRun, compareInputs, isSameInAll } from './differences';
 import { PickList, type RunChoice } from './pick-list';
-import { ByLevel, ComparisonInWords, Differences } from './sections';
 import { compareSentences, titleOf } from './words';
 
 /** Below the limits: drawn by the server, made live after them. */
+const ByLevel = dynamic(async () => (await import('./sections')).ByLevel);
+const ComparisonInWords = dynamic(async () => (await import('./sections')).ComparisonInWords);
+const Differences = dynamic(async () => (await import('./sections')).Differences);
 const StarByStar = dynamic(async () => (await import('./star-by-star')).StarByStar);
 const WaySection = dynamic(async () => (await import('./way-section')).WaySection);
 
