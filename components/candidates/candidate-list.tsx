@@ -105,7 +105,10 @@ function CandidateTable({
         {candidates.map((one) => (
           <Row key={one.id}>
             <Cell isRowHead className="whitespace-nowrap">
-              <Link href={`/${collaboration}/candidates/${one.id}`}>
+              <Link
+                className="underline underline-offset-3"
+                href={`/${collaboration}/candidates/${one.id}`}
+              >
                 {one.star} {one.name}
               </Link>
               <FoldedValues candidate={one} lead={lead} />

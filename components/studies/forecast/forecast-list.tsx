@@ -98,7 +98,12 @@ function ForecastTable({
           study.settings.kind !== 'forecast' ? null : (
             <Row key={study.id}>
               <Cell isRowHead className="min-w-36 max-md:align-top">
-                <Link href={`/${collaboration}/forecasts/${study.id}`}>{study.settings.name}</Link>
+                <Link
+                  className="underline underline-offset-3"
+                  href={`/${collaboration}/forecasts/${study.id}`}
+                >
+                  {study.settings.name}
+                </Link>
                 <span className="block font-normal text-chart text-ink3 lg:hidden">
                   <span className="md:hidden">
                     {plannedInWords(study.settings)}; from {study.run.analysisKey}, run{' '}
