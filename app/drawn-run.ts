@@ -7,7 +7,7 @@ import { findRun, findRunRecord } from '@/lib/services/runs';
 
 /** Digits of what a page draws: as many as exports carry, and a third of what was computed. */
 const DIGITS = 6;
-/** Of a SHA-256: so many tell the maps of two runs apart. */
+/** Of a SHA-256: so many tell the values of two maps apart. */
 const DIGEST_CHARACTERS = 16;
 /** Characters of finished runs that are kept, some hundred runs of 500 stars. */
 const MOST_KEPT = 24_000_000;
@@ -41,9 +41,9 @@ function asDrawn({
   return {
     inputs: {
       ...inputs,
-      stars: inputs.stars.map(({ mapId: _row, mapChecksum: _bytes, mapDigest, ...star }) => ({
+      stars: inputs.stars.map(({ mapId: _row, mapDigest: _recipe, mapChecksum, ...star }) => ({
         ...star,
-        mapDigest: mapDigest.slice(0, DIGEST_CHARACTERS),
+        mapChecksum: mapChecksum.slice(0, DIGEST_CHARACTERS),
       })),
     },
     result: {

@@ -36,6 +36,7 @@ export function StepsChart(props: StepsChartProps) {
     bottom: 8 + rows.length * rowPx,
   };
   const height = frame.bottom + 46;
+  const largest = Math.max(from.limit, to.limit);
   const most = 1.06 * Math.max(...rows.flatMap(({ start, end }) => [start, end]));
   const x = scaleLinear([0, most], [frame.left, frame.right]);
   const middle = (row: number) => frame.top + (row + 0.5) * rowPx;
@@ -63,7 +64,7 @@ export function StepsChart(props: StepsChartProps) {
           at={at}
           onAt={setAt}
           label={`Read the steps from ${from.name} to ${to.name}`}
-          say={({ row }) => sayRow(rows[row], quantity)}
+          say={({ row }) => sayRow(rows[row], quantity, largest)}
         />
       }
     >
@@ -100,7 +101,7 @@ export function StepsChart(props: StepsChartProps) {
               />
             )}
             <text className={row.isTotal ? 'bound-text' : ''} x={x(high) + 8} y={y + 4}>
-              {row.isTotal ? formatLimit(row.end, quantity) : points(row.end - row.start)}
+              {row.isTotal ? formatLimit(row.end, quantity) : points(row.end - row.start, largest)}
             </text>
           </g>
         );
@@ -137,21 +138,35 @@ function rowsOf({ from, to, steps }: StepsChartProps): Row[] {
   ];
 }
 
-/** "+1.2" or "−3.0" points. */
-export function points(change: number): string {
+/** A step below this share of the larger limit would not show in three digits of it. */
+const LEAST_SHARE = 5e-4;
+
+/**
+ * "+1.2 points", "−3.0 points", or "no change".
+ *
+ * @param most the larger of the two limits [fraction]
+ */
+export function points(change: number, most: number): string {
+  if (Math.abs(change) < LEAST_SHARE * most || change === 0) return 'no change';
   const text = formatSignificant(Math.abs(100 * change), 2);
-  if (change === 0) return '0 points';
   return `${change < 0 ? '−' : '+'}${text} points`;
 }
 
-function sayRow({ name, start, end, isTotal }: Row, quantity: RateQuantity): string[] {
+function sayRow(
+  { name, start, end, isTotal }: Row,
+  quantity: RateQuantity,
+  largest: number,
+): string[] {
   return isTotal
     ? [`${name} ${formatLimit(end, quantity)}`]
-    : [`${name} ${points(end - start)}`, `to ${formatLimit(end, quantity)}`];
+    : [`${name} ${points(end - start, largest)}`, `to ${formatLimit(end, quantity)}`];
 }
 
 function stepsSentence({ from, to, steps, quantity, wayLabel }: StepsChartProps): string {
-  const way = steps.map(({ name, change }) => `${name.toLowerCase()} ${points(change)}`).join(', ');
+  const largest = Math.max(from.limit, to.limit);
+  const way = steps
+    .map(({ name, change }) => `${name.toLowerCase()} ${points(change, largest)}`)
+    .join(', ');
   return `From ${from.name}, ${formatLimit(from.limit, quantity)}, to ${to.name}, ${formatLimit(to.limit, quantity)}: ${way}; ${wayLabel}`;
 }
 
@@ -161,7 +176,7 @@ function stepsTable(props: StepsChartProps): ChartTable {
     columns: ['step', 'change', 'limit after it'],
     rows: rowsOf(props).map(({ name, start, end, isTotal }) => [
       name,
-      isTotal ? '–' : points(end - start),
+      isTotal ? '–' : points(end - start, Math.max(props.from.limit, props.to.limit)),
       formatLimit(end, props.quantity),
     ]),
   };

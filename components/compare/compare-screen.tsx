@@ -12,7 +12,13 @@ import { compareAddress, type SideAddress } from './address';
 import { ComparePlate } from './compare-plate';
 import { type CompareSide, comparedRun } from './compared-run';
 import { CopyLink } from './copy-link';
-import { type ComparedInput, type ComparedRun, compareInputs, isSameInAll } from './differences';
+import {
+  type ComparedInput,
+  type ComparedRun,
+  compareInputs,
+  isSameInAll,
+  otherQuestions,
+} from './differences';
 import { PickList, type RunChoice } from './pick-list';
 import { compareSentences, titleOf } from './words';
 
@@ -151,7 +157,8 @@ function OtherQuestions({
   differing: ComparedInput[];
 }) {
   const rows = differing.filter((row) => row.changesQuestion);
-  if (rows.length === 0) return null;
+  const title = otherQuestions(differing);
+  if (title === undefined) return null;
   const [a, ...others] = sides;
   const query = alignQuery(a, rows);
   const apart = others.filter((_, index) =>
@@ -161,7 +168,7 @@ function OtherQuestions({
     <div className="mt-4">
       <Notice
         tone="warn"
-        title={`The limits answer different questions: ${rows.map(({ name }) => name.toLowerCase()).join(', ')} ${rows.length === 1 ? 'differs' : 'differ'}.`}
+        title={title}
         actions={
           query !== '' &&
           apart.map(({ letter, address }) => (

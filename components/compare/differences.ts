@@ -110,15 +110,31 @@ export function compareInputs(sides: ComparedRun[]): ComparedInput[] {
     row('Cooling', ({ inputs }) => inputs.cooling),
     row('Eccentricity', ({ inputs }) => inputs.eccentricity),
     row('Threshold', ({ inputs }) => inputs.threshold),
-    row('Engine', ({ inputs }) => `version ${inputs.engineVersion}`),
+    row('Engine', ({ inputs }) => engineWords(inputs)),
   ];
 }
 
-/** How many of the stars have the same map in the first run. */
-function sampleWords(inputs: DrawnInputs, first: DrawnInputs): string {
-  const known = new Map(first.stars.map((star) => [star.starId, star.mapDigest]));
-  const other = inputs.stars.filter((star) => known.get(star.starId) !== star.mapDigest).length;
+/** Which engine computed, and which made the maps where it was another. */
+function engineWords({ engineVersion, mapEngines = [] }: DrawnInputs): string {
+  const isOne = mapEngines.every((made) => made === engineVersion);
+  return `version ${engineVersion}${isOne ? '' : `, maps of ${mapEngines.join(' and ')}`}`;
+}
+
+/** How many of the stars have a map of other values than in the first run. */
+export function sampleWords(inputs: DrawnInputs, first: DrawnInputs): string {
+  const known = new Map(first.stars.map((star) => [star.starId, star.mapChecksum]));
+  const other = inputs.stars.filter((star) => known.get(star.starId) !== star.mapChecksum).length;
   return other === 0 ? 'as in A' : `${other} other than in A`;
+}
+
+/** What the warning of a comparison begins with; undefined where all ask the same question. */
+export function otherQuestions(differing: ComparedInput[]): string | undefined {
+  const names = differing
+    .filter((row) => row.changesQuestion)
+    .map(({ name }) => name.toLowerCase());
+  if (names.length === 0) return undefined;
+  const verb = names.length === 1 ? 'differs' : 'differ';
+  return `The limits answer different questions: ${names.join(', ')} ${verb}.`;
 }
 
 export interface ComparedLevel {

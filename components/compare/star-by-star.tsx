@@ -45,7 +45,7 @@ const shownAtFirst = 10;
 export function StarByStar({ a, b, number }: { a: ComparedRun; b: ComparedRun; number: number }) {
   const [isFull, setFull] = useState(false);
   const stars = compareStars(a, b);
-  const changed = stars.filter((star) => Math.abs((star.b ?? 0) - (star.a ?? 0)) > 1e-9);
+  const changed = stars.filter((star) => isTold((star.b ?? 0) - (star.a ?? 0)));
   const sum = (of: 'a' | 'b') => stars.reduce((total, star) => total + (star[of] ?? 0), 0);
   const only = (of: 'a' | 'b', other: 'a' | 'b') =>
     stars.filter((star) => star[of] !== null && star[other] === null).length;
@@ -60,7 +60,8 @@ export function StarByStar({ a, b, number }: { a: ComparedRun; b: ComparedRun; n
       <SectionOpener number={number} title="Star by star" context={summary.join('; ')} />
       {changed.length === 0 ? (
         <p className="text-ink2">
-          Every star is seen with the same probability in both: the difference lies elsewhere.
+          Every star is seen with the same probability in both, to three decimals: the difference
+          lies elsewhere.
         </p>
       ) : (
         <>
@@ -94,6 +95,9 @@ export function StarByStar({ a, b, number }: { a: ComparedRun; b: ComparedRun; n
     </section>
   );
 }
+
+/** Whether a difference shows in the three decimals that it is written with. */
+export const isTold = (change: number): boolean => Math.abs(change) >= 0.0005;
 
 function signed(value: number): string {
   return `${value < 0 ? '−' : '+'}${Math.abs(value).toFixed(3)}`;

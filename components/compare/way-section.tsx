@@ -116,8 +116,8 @@ function haveSameMaps({ inputs: one }: ComparedRun, { inputs: other }: ComparedR
     one.grid.massMjup.join() === other.grid.massMjup.join() &&
     one.grid.semiMajorAxisAu.join() === other.grid.semiMajorAxisAu.join() &&
     one.stars.every(
-      ({ starId, mapDigest }, index) =>
-        other.stars[index].starId === starId && other.stars[index].mapDigest === mapDigest,
+      ({ starId, mapChecksum }, index) =>
+        other.stars[index].starId === starId && other.stars[index].mapChecksum === mapChecksum,
     )
   );
 }

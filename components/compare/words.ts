@@ -1,7 +1,7 @@
 import { listNames } from '@/components/analyses/name-words';
 import { describeLevel } from '@/lib/inference';
 import { formatLimit, formatSignificant } from '@/lib/quantities/display';
-import type { ComparedInput, ComparedRun } from './differences';
+import { type ComparedInput, type ComparedRun, otherQuestions } from './differences';
 
 /** The comparison as a paragraph, from the same numbers that the screen shows. */
 export function compareSentences(sides: ComparedRun[], differing: ComparedInput[]): string {
@@ -15,7 +15,13 @@ export function compareSentences(sides: ComparedRun[], differing: ComparedInput[
     ({ name, values }) =>
       `${name.replace(' α', '').replace(' β', '').toLowerCase()} (${values.join(values.length === 2 ? ' against ' : ', ')})`,
   );
-  return [opening, ...ratios(sides), `They differ in ${listNames(changes)}.`].join(' ');
+  const warning = otherQuestions(differing);
+  return [
+    opening,
+    ...(warning === undefined ? [] : [warning]),
+    ...ratios(sides),
+    `They differ in ${listNames(changes)}.`,
+  ].join(' ');
 }
 
 /** Ratios to the first side, where both answer for the same quantity. */

@@ -246,9 +246,12 @@ export const runSchema = runSummarySchema.extend({
 });
 export type RunView = z.infer<typeof runSchema>;
 
-/** What a page draws of a run's inputs: of each star not the map's row, which nothing on it names. */
+/**
+ * What a page draws of a run's inputs: of each star's map the fingerprint of its values, by which
+ * maps of two runs are compared, whoever made them.
+ */
 export type DrawnInputs = Omit<RunInputs, 'stars'> & {
-  stars: Omit<RunInputs['stars'][number], 'mapId' | 'mapChecksum'>[];
+  stars: Omit<RunInputs['stars'][number], 'mapId' | 'mapDigest'>[];
 };
 /** What a page draws of a result: names and surveys of its stars are in the inputs. */
 export type DrawnResult = Omit<RunResult, 'starTable'> & {

@@ -1,10 +1,15 @@
 import { describe, expect, it } from 'vitest';
+import { points } from '@/components/charts/steps-chart';
 import { mostSides, readSides, writeSide } from '@/components/compare/address';
+import { type ComparedRun, sampleWords } from '@/components/compare/differences';
 import { wayFromAToB } from '@/components/compare/from-a-to-b';
+import { isTold } from '@/components/compare/star-by-star';
+import { compareSentences } from '@/components/compare/words';
 import { askedOf } from '@/components/runs/live-answer';
 import { restrictSample } from '@/components/runs/live-sample';
 import type { LiveSetting } from '@/components/runs/live-setting';
 import { answerQuestion } from '@/lib/inference';
+import type { DrawnInputs } from '@/lib/schemas/runs';
 import { buildSample, definition } from '../runs/sample';
 
 describe('addresses of a comparison', () => {
@@ -23,6 +28,41 @@ describe('addresses of a comparison', () => {
     expect(readSides(undefined)).toEqual([]);
     const many = Array.from({ length: 9 }, (_, i) => `A-${i + 1}`).join();
     expect(readSides(many)).toHaveLength(mostSides);
+  });
+});
+
+describe('what a comparison says', () => {
+  it('calls a step that no shown digit tells no change', () => {
+    expect(points(-3.1e-10, 0.058)).toBe('no change');
+    expect(points(2e-5, 0.058)).toBe('no change');
+    expect(points(-0.003, 0.058)).toBe('−0.30 points');
+    expect([isTold(0.0004), isTold(-0.0006)]).toEqual([false, true]);
+  });
+
+  it('compares maps by their values, whoever made them', () => {
+    const inputsOf = (mapChecksum: string) =>
+      ({ stars: [{ starId: 'one', mapChecksum }] }) as unknown as DrawnInputs;
+    expect(sampleWords(inputsOf('ab'), inputsOf('ab'))).toBe('as in A');
+    expect(sampleWords(inputsOf('cd'), inputsOf('ab'))).toBe('1 other than in A');
+  });
+
+  it('warns in its words too where the limits answer different questions', () => {
+    const side = (name: string, credibleLevel: number, limit: number) =>
+      ({
+        name,
+        result: {
+          quantity: 'host_fraction',
+          credibleLevel,
+          answer: { limit, isConstrained: true },
+        },
+      }) as unknown as ComparedRun;
+    const sides = [side('A-1', 0.95, 0.1), side('A-2', 0.9, 0.039)];
+    const level = { name: 'Level', values: ['95 %', '90 %'], changesQuestion: true };
+    expect(compareSentences(sides, [level])).toContain(
+      'The limits answer different questions: level differs. Beside the limit of A-1',
+    );
+    const prior = { name: 'Prior', values: ['one', 'other'], changesQuestion: false };
+    expect(compareSentences(sides, [prior])).not.toContain('different questions');
   });
 });
 
