@@ -229,6 +229,53 @@ export function posteriorTable(run: FinishedRun, head: Head): WrittenTable {
 const percent = (limit: number | null) =>
   limit === null ? null : { below: formatSignificant(100 * limit, 2) };
 
+const intervalNames: Record<Row['interval'], string> = {
+  upper_limit: 'Upper limit',
+  central: 'Equal-tailed',
+  highest_density: 'Highest density',
+};
+
+/** Medians and intervals of the run's quantity for a paper, with and without the detections. */
+export function writeIntervalsTable(run: FinishedRun, style: LatexStyle): string {
+  const { result } = run;
+  const isFraction = result.quantity === 'host_fraction';
+  const unit = isFraction ? '% of stars' : 'per 100 stars';
+  const rounded = (rate: number | null) =>
+    rate === null ? null : formatSignificant(100 * rate, 2);
+  const table: LatexTable = {
+    caption:
+      `Credible intervals of ${isFraction ? 'the host fraction' : 'the number of planets'} ` +
+      `(${stateOf(run)}, ${run.analysis} run ${run.number})`,
+    label: `tab:${run.analysis.toLowerCase()}-run-${run.number}-intervals`,
+    columns: [
+      { heading: 'Interval', align: 'l' },
+      { heading: 'Detections', align: 'l' },
+      { heading: 'Credible level', align: 'l' },
+      { heading: 'Lower', unit, align: 'r' },
+      { heading: 'Median', unit, align: 'r' },
+      { heading: 'Upper', unit, align: 'r' },
+    ],
+    rows: intervalRows(run).map((row) => {
+      const { isConstrained } = row.isZero ? result.zero : result.answer;
+      const cell = (rate: number | null) => (isConstrained ? rounded(rate) : null);
+      return [
+        intervalNames[row.interval],
+        countingRule(run, row.isZero, row.quantity),
+        describeLevel(row.level),
+        cell(row.lower),
+        cell(row.estimate),
+        cell(row.upper),
+      ];
+    }),
+    notes: [
+      `Prior: ${priorText(run, result.quantity)}.`,
+      'Conditions as in the table of upper limits; numbers rounded to two digits.',
+      `Fingerprint of the result (SHA-256): ${run.resultDigest}.`,
+    ],
+  };
+  return writeLatexTable(table, style);
+}
+
 /** Limits by level for a paper, rounded to two digits; the note carries every condition. */
 export function writeLimitsTable(run: FinishedRun, style: LatexStyle): string {
   const { result, inputs, population } = run;

@@ -220,6 +220,13 @@ describe('limits.tex', () => {
     expect(text).toContain('\\begin{deluxetable}');
     expect(text).toMatch(/95\\,\\% & \$<[\d.]+\$ & \$<[\d.]+\$/);
     expectConditions(text);
+    expect(text).toContain('Highest density');
+    expect(text).toMatch(
+      /Equal-tailed & confirmed companions [^&]*& 68\\,\\% & [\d.]+ & [\d.]+ & [\d.]+/,
+    );
+    const levels = await fetchFile('levels.tex');
+    expect(levels.text).toContain('\\begin{deluxetable}');
+    expect(levels.text).not.toContain('Equal-tailed');
     const plain = await fetchFile('limits.tex', '?style=tabular');
     expect(plain.text).toContain('\\begin{tabular}');
     expect((await fetchFile('limits.tex', '?style=word')).response.status).toBe(400);

@@ -1,5 +1,5 @@
 import { bytesOf, type FloatFormat, type LatexStyle, type WrittenBytes } from '@/lib/formats';
-import { type FinishedRun, writeLimitsTable } from '../export-limits';
+import { type FinishedRun, writeIntervalsTable, writeLimitsTable } from '../export-limits';
 import { type ArrayEnding, arrayEndings, arrayFormats, mapsBytes } from './array-formats';
 import { writeMethods, writeReferences } from './methods';
 import { combinedMapOfRun, mapsOfRun, posteriorArray } from './run-arrays';
@@ -50,9 +50,11 @@ function tableExport(stem: string, ending: TableEnding): RunExport {
     audience,
     mediaType,
     make: async (run, { style }) => {
-      // Both limits and levels are one table in a paper.
+      // In a paper limits are read level by level; the intervals are a table of their own.
       if (ending === 'tex' && (stem === 'limits' || stem === 'levels')) {
-        return bytesOf(encoder.encode(writeLimitsTable(run, style)));
+        const tables = [writeLimitsTable(run, style)];
+        if (stem === 'limits') tables.push(writeIntervalsTable(run, style));
+        return bytesOf(encoder.encode(tables.join('\n')));
       }
       const table = await tableOfRun(run, stem);
       const label = `tab:${run.analysis.toLowerCase()}-run-${run.number}-${stem}`;
