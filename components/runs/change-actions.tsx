@@ -1,5 +1,6 @@
 'use client';
 
+import { useState } from 'react';
 import { useEditing } from '@/components/hooks/use-editing';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
@@ -7,6 +8,7 @@ import { ChangedNotice } from '@/components/ui/form/changed-notice';
 import type { LiveSetting } from './live-setting';
 import { recipeWords } from './recipe-words';
 import { HELD, type KeptActionsProps, mayChange, nextNumber, useWork, WAIT } from './result-work';
+import { sharedVersion } from './shared-version';
 
 export interface ChangeActionsProps extends KeptActionsProps {
   /** The setting at the moment of the press: it moves too often to be handed down. */
@@ -44,6 +46,13 @@ export function ChangeActions(props: ChangeActionsProps) {
     });
   const saveCopy = () =>
     perform('copy', async () => (await saving()).copyAndRun(collaboration, analysis, settingNow()));
+  const [asked, setAsked] = useState<{ population: string; go(): Promise<void> }>();
+  /** A version of what all others use too is not made unasked. */
+  const ask = (go: () => Promise<void>) => async () => {
+    const population = sharedVersion(analysis, settingNow());
+    if (population === undefined) await go();
+    else setAsked({ population, go });
+  };
   return (
     <>
       <Button icon="undo" onClick={onUndo} className={isFoot ? '' : 'max-md:hidden'}>
@@ -53,7 +62,7 @@ export function ChangeActions(props: ChangeActionsProps) {
         <Button
           icon="copy"
           variant={isOwn ? 'normal' : 'primary'}
-          onClick={saveCopy}
+          onClick={ask(saveCopy)}
           isBusy={work === 'copy'}
           disabledReason={whatIf}
         >
@@ -64,7 +73,7 @@ export function ChangeActions(props: ChangeActionsProps) {
         <Button
           variant="primary"
           className={isFoot ? '' : 'max-md:hidden'}
-          onClick={save}
+          onClick={ask(save)}
           isBusy={work === 'save'}
           disabledReason={whatIf ?? (isBusy ? WAIT : undefined)}
         >
@@ -72,6 +81,30 @@ export function ChangeActions(props: ChangeActionsProps) {
         </Button>
       )}
       {dialog}
+      <Dialog
+        isOpen={asked !== undefined}
+        onClose={() => setAsked(undefined)}
+        title={`Also save a version of ${asked?.population}?`}
+        actions={
+          <>
+            <Button onClick={() => setAsked(undefined)}>Back to the result</Button>
+            <Button
+              variant="primary"
+              onClick={() => {
+                setAsked(undefined);
+                void asked?.go();
+              }}
+            >
+              Save version and run
+            </Button>
+          </>
+        }
+      >
+        <p>
+          Ranges and indices belong to the population. {asked?.population} is shared with all: its
+          newest version will hold the ones set here. Analyses keep the version that they name.
+        </p>
+      </Dialog>
       <Dialog
         isOpen={editing.conflict !== null}
         onClose={editing.leave}

@@ -2,9 +2,9 @@ import { changeRecipe, copyAnalysis, requireRecipe } from '@/components/hooks/us
 import { createPopulation, savePopulationVersion } from '@/components/hooks/use-populations';
 import { startRun } from '@/components/hooks/use-runs';
 import type { AnalysisRecipe, AnalysisView } from '@/lib/schemas/analyses';
-import { isPlainPowerLaw } from '@/lib/schemas/plain-power-law';
 import type { ListedPopulation } from '@/lib/schemas/populations';
-import { isSameDefinition, type LiveSetting } from './live-setting';
+import type { LiveSetting } from './live-setting';
+import { hasOwnPopulation } from './shared-version';
 
 /**
  * Stores a setting in the recipe and starts a run of it.
@@ -21,13 +21,11 @@ export async function saveAndRun(
   analysis: AnalysisView,
   setting: LiveSetting,
 ): Promise<void> {
-  const { definition, ...asked } = setting;
-  const before = analysis.population.definition;
+  const { definition: _ofPopulation, ...asked } = setting;
   await requireRecipe(collaboration, analysis.key, analysis.recipe);
-  const population: { id: string } =
-    isPlainPowerLaw(before) && isSameDefinition(definition, before)
-      ? analysis.population
-      : await storePopulation(collaboration, analysis.population, setting);
+  const population: { id: string } = hasOwnPopulation(analysis, setting)
+    ? await storePopulation(collaboration, analysis.population, setting)
+    : analysis.population;
   const recipe = await recipeOf({ ...analysis.recipe, populationId: population.id }, asked);
   await changeRecipe(collaboration, analysis.key, analysis.recipe, recipe);
   await startRun(collaboration, analysis.key);
