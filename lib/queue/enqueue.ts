@@ -44,6 +44,30 @@ async function insertJob<Kind extends JobKind>(
   return row.id;
 }
 
+interface OpenMaps {
+  id: string;
+  payload: { targetIds?: string[] };
+}
+
+/**
+ * Holds a survey and the open job of its maps until the transaction ends. A worker locks its job
+ * before the targets: whoever changes targets and then asks for their maps calls this first, or the
+ * two wait for each other.
+ *
+ * @returns the open job, at most one
+ */
+export async function holdMaps(transaction: Transaction, surveyId: string): Promise<OpenMaps[]> {
+  // One after the other: two requests for one survey would both find no open job. The key stays
+  // free, since a worker that ends its job looks at the survey while it holds what we ask for next.
+  await select('select id from survey where id = $1 for no key update', [surveyId], transaction);
+  return select<OpenMaps>(
+    `select id, payload from job where survey_id = $1 and kind = 'compute-maps'
+       and status in ('waiting', 'running') for update`,
+    [surveyId],
+    transaction,
+  );
+}
+
 /**
  * Asks for the maps of a survey. A job that is open already is the answer: it looks again for
  * missing maps before it ends, and its row is locked here so that it cannot end in between.
@@ -60,15 +84,7 @@ export async function enqueueMaps(
   },
 ): Promise<string> {
   const { collaborationId, surveyId, requestedBy, targetIds } = asked;
-  // One after the other: two requests for one survey would both find no open job. The key stays
-  // free, since a worker that ends its job looks at the survey while it holds what we ask for next.
-  await select('select id from survey where id = $1 for no key update', [surveyId], transaction);
-  const open = await select<{ id: string; payload: { targetIds?: string[] } }>(
-    `select id, payload from job where survey_id = $1 and kind = 'compute-maps'
-       and status in ('waiting', 'running') for update`,
-    [surveyId],
-    transaction,
-  );
+  const open = await holdMaps(transaction, surveyId);
   if (open.length === 0) {
     return insertJob(transaction, {
       collaborationId,

@@ -1,7 +1,7 @@
 import { QueryTypes, type Transaction, UniqueConstraintError } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { Conflict } from '@/lib/errors';
-import { enqueueMaps } from '@/lib/queue/enqueue';
+import { enqueueMaps, holdMaps } from '@/lib/queue/enqueue';
 import type { UploadDependents, UploadView } from '@/lib/schemas/uploads';
 import { database, inTransaction, type SurveyRow, TargetRow, UploadRow } from '@/models';
 import { recordAudit } from './audit';
@@ -95,6 +95,7 @@ async function withdraw(
   survey: SurveyRow,
   transaction: Transaction,
 ): Promise<void> {
+  await holdMaps(transaction, survey.id);
   const plan = await planWithdrawal(row, survey, transaction);
   const [claimed] = await UploadRow.update(
     { state: 'withdrawn', withdrawnAt: new Date(), withdrawnBy: actor.personId },

@@ -3,7 +3,7 @@ import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
 import { Conflict, NotFound } from '@/lib/errors';
 import type { UploadKind } from '@/lib/formats';
-import { enqueueMaps } from '@/lib/queue/enqueue';
+import { enqueueMaps, holdMaps } from '@/lib/queue/enqueue';
 import { idSchema } from '@/lib/schemas/common';
 import type { UploadReport, UploadSettings, UploadView } from '@/lib/schemas/uploads';
 import { database, inTransaction, SurveyRow, UploadRow } from '@/models';
@@ -199,6 +199,7 @@ export async function storeUpload(actor: Actor, id: string): Promise<UploadView>
         { where: { id: row.id, state: 'read' }, transaction },
       );
       if (claimed === 0) return;
+      if (survey) await holdMaps(transaction, survey.id);
       const standing = survey && (await takeStanding(survey, transaction));
       await plan.apply(transaction, row.id);
       if (survey && standing) {

@@ -18,7 +18,7 @@ import {
   uploadSchema,
 } from '@/lib/schemas/uploads';
 import { closeReaders } from '@/lib/services/reading';
-import { ContrastCurveRow, TargetRow } from '@/models';
+import { ContrastCurveRow, database, TargetRow } from '@/models';
 import { withDatabase } from '../support/database';
 import { buildFinishedLab, type FinishedLab } from '../support/finished-run';
 import { bearer, call, tokenOf, webAddress } from '../support/people';
@@ -233,6 +233,36 @@ describe('withdrawing a file', () => {
     await withdraw(first.id);
     expect(await current()).toEqual([]);
     expect(await target?.reload()).toMatchObject({ mapId: null, mapState: 'none' });
+  });
+
+  it('waits for a worker that holds the job of the maps, and lets it write the targets meanwhile', async () => {
+    const survey = await newSurvey();
+    await store({ kind: 'targets', survey, text: targets(40, ['One']) });
+    await store({ kind: 'contrast-curves', survey, text: curve(10) });
+    const second = await store({ kind: 'contrast-curves', survey, text: curve(12) });
+    const ofSurvey = '(select id from survey where slug = $1)';
+    const openJobs = `from job where survey_id = ${ofSurvey} and status in ('waiting', 'running')`;
+    await expect
+      .poll(() => query(`select 1 ${openJobs}`, [survey]), { timeout: 30_000 })
+      .toEqual([]);
+    // On no queue: open for whoever looks, and nobody takes it.
+    await query(
+      `update job set status = 'waiting', finished_at = null where survey_id = ${ofSurvey}
+         and kind = 'compute-maps'
+         and created_at = (select max(created_at) from job where survey_id = ${ofSurvey})`,
+      [survey],
+    );
+    const worker = await database().transaction();
+    const asWorker = { transaction: worker, bind: [survey] };
+    await database().query(`select 1 from job where survey_id = ${ofSurvey} for update`, asWorker);
+    const answer = withdraw(second.id);
+    await expect.poll(() => query('select 1 from pg_locks where not granted')).not.toHaveLength(0);
+    await database().query(
+      `update target set map_fault = null where survey_id = ${ofSurvey}`,
+      asWorker,
+    );
+    await worker.commit();
+    expect((await answer).status).toBe(200);
   });
 
   it('of companions names the runs that used it; they stay and are marked as older', async () => {

@@ -57,13 +57,13 @@ async function renewMap(
     transaction,
   });
   if (survey.mapSettings.candidates !== 'cut' || curves === 0) return;
-  await target.update({ mapState: 'waiting', mapFault: null }, { transaction });
   await enqueueMaps(transaction, {
     collaborationId: actor.collaborationId,
     surveyId: survey.id,
     requestedBy: actor.personId,
     targetIds: [target.id],
   });
+  await target.update({ mapState: 'waiting', mapFault: null }, { transaction });
 }
 
 /**

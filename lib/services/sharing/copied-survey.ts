@@ -1,6 +1,6 @@
 import type { Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
-import { enqueueMaps } from '@/lib/queue/enqueue';
+import { enqueueMaps, holdMaps } from '@/lib/queue/enqueue';
 import { CoolingTableRow, type ShareRow, SurveyRow } from '@/models';
 import type { SharedContent } from './content';
 import { copyMaps } from './copied-maps';
@@ -107,6 +107,7 @@ export async function keepCopy(
   const mapSettings = await keepCooling(share, content, transaction);
   const there = await SurveyRow.findOne({ where: { shareId: share.id }, transaction });
   const { slug, name, ...told } = content.survey;
+  if (there) await holdMaps(transaction, there.id);
   const survey = there
     ? await there.update({ ...told, mapSettings }, { transaction })
     : await createSurvey(share, content, mapSettings, transaction);
