@@ -1,10 +1,6 @@
 import { QueryTypes } from 'sequelize';
 import { logSpacedAxis } from '@/lib/numerics/grid';
-import {
-  type PowerLawPopulation,
-  populationWeights,
-  type ShapedPopulation,
-} from '@/lib/population';
+import { marginalWeights, type PowerLawPopulation, type ShapedPopulation } from '@/lib/population';
 import type { MapSettings } from '@/lib/schemas/surveys';
 import type { YardstickView } from '@/lib/schemas/yardstick';
 import {
@@ -20,7 +16,7 @@ import { type PassingMap, streamMaps } from '@/models/map-stream';
 import { LEAD_ANALYSIS } from './lead-analysis';
 
 /** One map seen through a population: its mean, and its profile along semi-major axis. */
-interface MapSummary {
+export interface MapSummary {
   probability: number;
   /** Mass-averaged completeness at each node of the grid asked for. */
   profile: Float64Array;
@@ -116,12 +112,12 @@ export async function currentYardstick(collaborationId: string): Promise<Yardsti
   };
 }
 
-/** Sees maps through one population, on one grid. */
+/** Sees maps through one population, on one grid; maps that hold nothing of it see nothing of it. */
 function summariser(
   { population }: Yardstick,
   grid: MapGrid,
 ): (map: CompletenessMap) => MapSummary {
-  const weights = populationWeights(grid, population);
+  const weights = marginalWeights(grid, population);
   const columns = grid.semiMajorAxisAu.length;
   return (map) => {
     const regridded = regridNodes(map, grid).map.completeness;
