@@ -18,7 +18,7 @@ export interface SurveyCounts {
   candidate: number;
   ambiguous: number;
   background: number;
-  /** Maps of the targets that count. */
+  /** Maps of the targets that count: of none left out, of none chosen for a known companion. */
   mapIds: string[];
 }
 
@@ -59,7 +59,8 @@ const COUNTS = `
         (count(*) filter (where o.map_state = 'ready'))::int as ready,
         (count(*) filter (where o.map_state = 'failed'))::int as failed,
         coalesce(array_agg(o.map_id) filter (
-          where o.map_state = 'ready' and o.left_out_reason is null and o.map_id is not null),
+          where o.map_state = 'ready' and o.left_out_reason is null and o.map_id is not null
+            and o.attributes->'selectedForCompanion' is distinct from 'true'::jsonb),
           '{}') as "mapIds"
       from own o group by o.survey_id)
   select held.*, coalesce(curve.curves, 0) as curves,
