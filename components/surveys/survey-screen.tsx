@@ -6,6 +6,7 @@ import { ExportButton } from '@/components/exports/export-button';
 import { sentenceOf } from '@/components/hooks/api-problem';
 import { startMaps, useCompanions, useSurvey, useTargets } from '@/components/hooks/use-surveys';
 import { useUnpacked } from '@/components/hooks/use-unpacked';
+import { countOf } from '@/components/runs/level-table';
 import { SharedNotice } from '@/components/sharing/shared-notice';
 import { Button } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/empty-state';
@@ -16,10 +17,12 @@ import { PageTitle } from '@/components/ui/page-title';
 import { StateMark } from '@/components/ui/state-mark';
 import { Tabs } from '@/components/ui/tabs';
 import { TextAction } from '@/components/ui/text-action';
+import { describeLevel } from '@/lib/inference';
+import { formatLimit } from '@/lib/quantities/display';
 import type { Packed } from '@/lib/schemas/packed';
 import type { BoxedDefinition } from '@/lib/schemas/populations';
 import type { Shares } from '@/lib/schemas/sharing';
-import type { CompanionView, SurveyView, TargetList } from '@/lib/schemas/surveys';
+import type { CompanionView, SurveyLimit, SurveyView, TargetList } from '@/lib/schemas/surveys';
 import type { UploadView } from '@/lib/schemas/uploads';
 import { MapJobLine } from './map-job-line';
 import { describeMapSettings } from './map-setting-words';
@@ -67,8 +70,12 @@ function factsOf(survey: SurveyView): Fact[] {
       ),
     },
     { name: 'also in another survey', help: 'star', value: survey.alsoInAnother },
-    { name: 'vetted detections', help: 'detection', value: companions.confirmed },
-    { name: 'open candidates', help: 'candidate', value: open },
+    {
+      name: 'vetted detections',
+      help: 'detection',
+      value: companions.confirmed,
+      note: open === 1 ? '1 open candidate' : `${open} open candidates`,
+    },
     ...(survey.summedCompleteness === null
       ? []
       : [
@@ -79,7 +86,28 @@ function factsOf(survey: SurveyView): Fact[] {
             note: survey.yardstick && <YardstickWords yardstick={survey.yardstick} />,
           },
         ]),
+    ...(survey.alone ? [limitFact(survey.alone)] : []),
   ];
+}
+
+/** What the survey would say without the others; the ranges and whose question stand beside it. */
+function limitFact({ quantity, level, limit, ...of }: SurveyLimit): Fact {
+  return {
+    name: 'upper limit of this survey alone',
+    help: 'upper-limit',
+    value: formatLimit(limit, quantity),
+    isBound: true,
+    note: (
+      <>
+        ({describeLevel(level)}), {countOf(of.detections)}
+        {of.isSetByPrior && (
+          <>
+            , <StateMark kind="warn">set by the prior</StateMark>
+          </>
+        )}
+      </>
+    ),
+  };
 }
 
 /** Tabs beside which one target stands. */

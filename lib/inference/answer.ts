@@ -160,6 +160,30 @@ export function viewPopulation(
 }
 
 /**
+ * A view of stars whose mean completeness is known already.
+ *
+ * @param population not tabulated systems, and without a rate that scales with the host's mass
+ * @param completenessPerStar shape [star], 0..1
+ * @param shareOutsideMap share of the population outside the maps [fraction]
+ */
+export function viewOfStars(
+  population: Population,
+  completenessPerStar: Float64Array,
+  shareOutsideMap = 0,
+): PopulationView {
+  return {
+    population,
+    completenessPerStar,
+    numberSeenPerStar: null,
+    rateScale: null,
+    hostMassMsun: null,
+    exposure: sumExposure(completenessPerStar, null),
+    stars: completenessPerStar.length,
+    shareOutsideMap,
+  };
+}
+
+/**
  * Mean completeness per star and exposure that a likelihood works with.
  *
  * They differ for tabulated systems alone: the mean number counts the companions seen, the host

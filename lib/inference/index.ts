@@ -9,7 +9,14 @@ export type {
   StackedMaps,
   SummedMap,
 } from './answer';
-export { answerFromView, answerQuestion, countDetections, seenBy, viewPopulation } from './answer';
+export {
+  answerFromView,
+  answerQuestion,
+  countDetections,
+  seenBy,
+  viewOfStars,
+  viewPopulation,
+} from './answer';
 export { backgroundUpperLimit } from './background';
 export type { FrequentistCompanions, FrequentistRow } from './beside';
 export { frequentistBeside } from './beside';

@@ -47,3 +47,6 @@ export const pageSchema = z.strictObject({
 export const moment = z.iso.datetime({ offset: true });
 export const personRefSchema = z.object({ id: idSchema, name: z.string() });
 export type PersonRef = z.infer<typeof personRefSchema>;
+
+/** What a rate counts: stars with a planet, or planets. */
+export const rateQuantitySchema = z.enum(['companions_per_star', 'host_fraction']);

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { idSchema, lineSchema, moment } from './common';
+import { idSchema, lineSchema, moment, rateQuantitySchema } from './common';
 import { changeableParts } from './exercise-parts';
 
 export { type ChangeablePart, changeableParts, partNames } from './exercise-parts';
@@ -46,7 +46,7 @@ export const commentSubmissionSchema = z.strictObject({ comment: taskSchema });
 const limitSchema = z.object({
   sentence: z.string(),
   conditions: z.array(z.string()),
-  quantity: z.enum(['companions_per_star', 'host_fraction']),
+  quantity: rateQuantitySchema,
   credibleLevel: z.number(),
   limit: z.number(),
   isConstrained: z.boolean(),

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { idSchema, lineSchema, moment } from './common';
+import { idSchema, lineSchema, moment, rateQuantitySchema } from './common';
 import { jobStatusSchema } from './jobs';
 import { licences } from './licences';
 import { orcidSchema } from './orcid';
@@ -115,7 +115,7 @@ export const releaseRunSchema = z.object({
   detections: z.string(),
   limit: z.number(),
   credibleLevel: z.number(),
-  quantity: z.enum(['companions_per_star', 'host_fraction']),
+  quantity: rateQuantitySchema,
   frozenBy: z.string(),
   frozenAt: moment,
   inputsDigest: z.string(),

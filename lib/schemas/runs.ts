@@ -1,9 +1,8 @@
 import { z } from 'zod';
-import { idSchema, moment } from './common';
+import { idSchema, moment, rateQuantitySchema } from './common';
 import { jobSchema } from './jobs';
 import { sharedInputSchema, withdrawnSurveySchema } from './sharing';
 
-const quantitySchema = z.enum(['companions_per_star', 'host_fraction']);
 const numbers = z.array(z.number());
 const pair = z.tuple([z.number(), z.number()]);
 
@@ -131,7 +130,7 @@ const answerSchema = z.object({
 });
 
 export const runResultSchema = z.object({
-  quantity: quantitySchema,
+  quantity: rateQuantitySchema,
   credibleLevel: z.number(),
   stars: z.number(),
   entries: z.number(),
@@ -217,7 +216,7 @@ export const runSummarySchema = z.object({
   createdBy: z.string().nullable(),
   createdAt: moment,
   finishedAt: moment.nullable(),
-  quantity: quantitySchema.nullable(),
+  quantity: rateQuantitySchema.nullable(),
   credibleLevel: z.number(),
   limit: z.number().nullable(),
   zeroLimit: z.number().nullable(),

@@ -1,10 +1,9 @@
 import { z } from 'zod';
 import { ratePriorSchema } from './analyses';
-import { idSchema } from './common';
+import { idSchema, rateQuantitySchema } from './common';
 
 const fraction = z.number().min(0).max(1);
 const pair = z.tuple([z.number(), z.number()]);
-const quantitySchema = z.enum(['host_fraction', 'companions_per_star']);
 const indexSchema = z
   .strictObject({ linear: z.number(), perLogarithm: z.number() })
   .nullable()
@@ -17,7 +16,7 @@ export const limitStatementSchema = z.strictObject({
   state: z.enum(['recorded', 'live']).describe('live: it follows a control and no run records it'),
   sentence: z.string(),
   conditions: z.array(z.strictObject({ label: z.string(), text: z.string() })),
-  quantity: quantitySchema,
+  quantity: rateQuantitySchema,
   upperLimit: z
     .number()
     .nullable()
@@ -68,7 +67,7 @@ export type LimitStatement = z.infer<typeof limitStatementSchema>;
 export const statementQuerySchema = z.strictObject({
   /** A fraction, one of those that the run recorded; the run's own when absent. */
   level: z.coerce.number().gt(0).lt(1).optional(),
-  quantity: quantitySchema.optional(),
+  quantity: rateQuantitySchema.optional(),
   detections: z.enum(['counted', 'none']).optional(),
   /** What comes back; without it the Accept header decides, and JSON where that leaves it open. */
   as: z.enum(['text', 'json', 'latex']).optional(),

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { idSchema, moment, pageSchema } from './common';
+import { idSchema, moment, pageSchema, rateQuantitySchema } from './common';
 import { jobSchema } from './jobs';
 import { AGE_SHIFTS, COOLING_AS_RUN } from './stack-choices';
 import { type ResultOf, studyResultSchema } from './study-results';
@@ -55,7 +55,7 @@ export const studySummarySchema = z.object({
 export type StudySummary = z.infer<typeof studySummarySchema>;
 
 export const studySchema = studySummarySchema.extend({
-  quantity: z.enum(['companions_per_star', 'host_fraction']),
+  quantity: rateQuantitySchema,
   credibleLevel: z.number(),
   seed: z.string(),
   engineVersion: z.string(),

@@ -1,5 +1,12 @@
 import { z } from 'zod';
-import { idSchema, lineSchema, moment, personRefSchema, slugSchema } from './common';
+import {
+  idSchema,
+  lineSchema,
+  moment,
+  personRefSchema,
+  rateQuantitySchema,
+  slugSchema,
+} from './common';
 import { startConditionSchema } from './cooling';
 import { jobSchema } from './jobs';
 import { mapSettingsSchema } from './sensitivity';
@@ -51,6 +58,22 @@ export const updateSurveySchema = z
   })
   .refine(areYearsInOrder, yearsFault);
 
+/** The upper limit that a survey's stars give by themselves, as the lead analysis asks. */
+export const surveyLimitSchema = z.object({
+  /** Whose population, likelihood, prior, level and treatment of detections they are: "A-1". */
+  analysis: z.string(),
+  quantity: rateQuantitySchema,
+  /** Credible level [fraction]. */
+  level: z.number(),
+  /** [fraction of stars, or companions per star]. */
+  limit: z.number(),
+  isSetByPrior: z.boolean(),
+  stars: z.number(),
+  /** Counted. */
+  detections: z.number(),
+});
+export type SurveyLimit = z.infer<typeof surveyLimitSchema>;
+
 export const surveySchema = z.object({
   id: idSchema,
   slug: z.string(),
@@ -86,6 +109,8 @@ export const surveySchema = z.object({
   /** Sum of detection probabilities under the yardstick, if there is one. */
   summedCompleteness: z.number().nullable(),
   yardstick: yardstickSchema.nullable(),
+  /** Of one survey read by itself: null where the lead analysis cannot be asked of it alone. */
+  alone: surveyLimitSchema.nullable().optional(),
   mapJob: jobSchema.nullable(),
   can: z.object({ change: z.boolean(), import: z.boolean(), offer: z.boolean().optional() }),
   /** Where another collaboration owns it. */

@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize';
 import type { Actor } from '@/lib/access/actor';
 import { demand } from '@/lib/access/permissions';
-import { answerFromView, viewPopulation } from '@/lib/inference';
+import { answerFromView, viewOfStars, viewPopulation } from '@/lib/inference';
 import { hostScalingOf, needsHostMass, type Population } from '@/lib/population';
 import { select } from '@/lib/queue/statement';
 import type { RunInputs, RunResult } from '@/lib/schemas/runs';
@@ -69,16 +69,7 @@ function limitWith(
   population: Population,
   completeness: Float64Array,
 ): number {
-  const view = {
-    population,
-    completenessPerStar: completeness,
-    numberSeenPerStar: null,
-    rateScale: null,
-    hostMassMsun: null,
-    exposure: completeness.reduce((sum, one) => sum + one, 0),
-    stars: completeness.length,
-    shareOutsideMap: result.shareOutsideMaps,
-  };
+  const view = viewOfStars(population, completeness, result.shareOutsideMaps);
   const starOf = new Map(inputs.stars.map(({ starId }, i) => [starId, i]));
   const { likelihood, prior, background, credibleLevel: level } = recipe;
   const detections = result.counted.map((found) => ({

@@ -19,6 +19,7 @@ import { isArchived } from './sharing/archived';
 import { describeShared, refuseShared } from './sharing/shared-surveys';
 import { gridOfSettings, summariseMaps, type Yardstick } from './survey-depth';
 import { readSurveyFacts, type SurveyFacts } from './survey-facts';
+import { limitAlone } from './survey-limit';
 import { together } from './together';
 
 /** A survey's short name for addresses: "Halyard II" → "halyard-ii". */
@@ -186,7 +187,11 @@ export async function listSurveys(actor: Actor): Promise<SurveyList> {
 export async function getSurvey(actor: Actor, slug: string): Promise<SurveyView> {
   const row = await findSurvey(actor, slug);
   const facts = await readFacts(actor.collaborationId, [row]);
-  return describeSurvey(actor, row, facts, { forNewer: true });
+  const [survey, alone] = await Promise.all([
+    describeSurvey(actor, row, facts, { forNewer: true }),
+    limitAlone(row, facts.yardstick),
+  ]);
+  return { ...survey, alone };
 }
 
 /** Only members lead surveys. */

@@ -1,18 +1,20 @@
 import { beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '@/lib/access/actor';
+import type { AnalysisRecipe } from '@/lib/schemas/analyses';
 import { listAnalyses } from '@/lib/services/analyses';
 import { leadOf } from '@/lib/services/lead-analysis';
 import { listStars } from '@/lib/services/stars';
 import { currentYardstick } from '@/lib/services/survey-depth';
 import { getSurvey, listSurveys, updateSurvey } from '@/lib/services/surveys';
 import { listTargets } from '@/lib/services/targets';
-import { CollaborationRow, type PopulationRow, type SurveyRow } from '@/models';
+import { CollaborationRow, type PopulationRow, type SurveyRow, TargetRow } from '@/models';
 import { withDatabase } from '../support/database';
 import { buildMap, buildRun } from '../support/lab-rows';
 import { actorOf, createCollaborationWith } from '../support/people';
 import { POPULATION } from '../support/population';
 import {
   buildAnalysis,
+  buildCompanion,
   buildPopulation,
   buildSurvey,
   buildTarget,
@@ -137,6 +139,71 @@ describe('the yardstick of lists', () => {
     expect(targets.targets[0].probability).toBeGreaterThan(0);
     expect(stars.stars[0].probability).toBe(targets.targets[0].probability);
     expect(surveys[0].summedCompleteness).toBe(targets.targets[0].probability);
+  });
+});
+
+describe('the sum of detection probabilities', () => {
+  it('is nothing where the maps hold nothing of what the lead asks for', async () => {
+    const far = { ...POPULATION, semiMajorAxisMinAu: 1000, semiMajorAxisMaxAu: 5000 };
+    await run(await analysis(await buildPopulation(actor.collaborationId, far)));
+    const { surveys } = await listSurveys(actor);
+    expect(surveys[0]).toMatchObject({ summedCompleteness: 0, maps: { ready: 1 } });
+    expect((await listTargets(actor, survey.slug, FIRST)).targets[0].probability).toBe(0);
+    expect((await listStars(actor, FIRST)).stars[0].probability).toBe(0);
+    expect((await getSurvey(actor, survey.slug)).alone).toBeNull();
+  });
+
+  it('leaves out a star that was chosen for its companion, as a run does', async () => {
+    await run(await analysis(await population()));
+    await TargetRow.update(
+      { attributes: { selectedForCompanion: true } },
+      { where: { surveyId: survey.id } },
+    );
+    const { summedCompleteness, depth, alone } = await getSurvey(actor, survey.slug);
+    expect([summedCompleteness, depth, alone]).toEqual([null, null, null]);
+  });
+});
+
+describe('the upper limit of a survey alone', () => {
+  const alone = async () => (await getSurvey(actor, survey.slug)).alone;
+  const ask = async (given: Partial<AnalysisRecipe> = {}) => {
+    const recipe = recipeOf([survey], await population(), given);
+    return buildAnalysis(actor.collaborationId, recipe, actor.personId);
+  };
+
+  it('follows from its stars by the question of the lead analysis', async () => {
+    expect(await alone()).toBeNull();
+    await run(await ask());
+    const [{ probability: p }] = (await listTargets(actor, survey.slug, FIRST)).targets;
+    // One star, f uniform in 0..1, L = 1 - p f: the quadratic of its cumulative posterior at 0.95.
+    const limit =
+      (1 - Math.sqrt(1 - 2 * (p as number) * 0.95 * (1 - (p as number) / 2))) / (p as number);
+    expect(await alone()).toMatchObject({ analysis: 'A-1', level: 0.95, stars: 1, detections: 0 });
+    expect((await alone())?.limit).toBeCloseTo(limit, 5);
+    // L = p f: the cumulative posterior is the square of f.
+    const target = await TargetRow.findOne({ where: { surveyId: survey.id }, rejectOnEmpty: true });
+    const companion = await buildCompanion(target);
+    expect(await alone()).toMatchObject({ detections: 1, quantity: 'host_fraction' });
+    expect((await alone())?.limit).toBeCloseTo(Math.sqrt(0.95), 5);
+    // Outside the ranges it does not count; without a mass a run would be refused.
+    await companion.update({ semiMajorAxisAu: 250 });
+    expect((await alone())?.limit).toBeCloseTo(limit, 5);
+    await companion.update({ massMjup: null });
+    expect(await alone()).toBeNull();
+  });
+
+  it('sets detections aside where the lead does, and leaves open candidates to a run', async () => {
+    await buildCompanion(
+      await TargetRow.findOne({ where: { surveyId: survey.id }, rejectOnEmpty: true }),
+    );
+    const first = await ask({ detections: 'none' });
+    await run(first);
+    expect(await alone()).toMatchObject({ analysis: 'A-1', detections: 0 });
+    const second = await ask({ candidates: { treatment: 'fixed' } });
+    await choose(second.id);
+    expect(await alone()).toBeNull();
+    await choose(first.id);
+    expect(await alone()).toMatchObject({ analysis: 'A-1' });
   });
 });
 
