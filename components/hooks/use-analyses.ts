@@ -70,6 +70,21 @@ export function changeRecipe(
   });
 }
 
+/** @throws ChangedMeanwhile where the name is not the one that was opened */
+export function renameAnalysis(
+  collaboration: string,
+  key: string,
+  opened: Pick<AnalysisView, 'name'>,
+  body: Pick<AnalysisView, 'name'>,
+): Promise<AnalysisView> {
+  return change(apiPath(collaboration, 'analyses', key), answer('analysisSchema'), {
+    part: ({ name }) => ({ name }),
+    opened,
+    body,
+    answer: answer('analysisSchema'),
+  });
+}
+
 export type NameAndRecipe = Pick<AnalysisView, 'name' | 'recipe'>;
 
 const nameAndRecipe = ({ name, recipe }: NameAndRecipe): NameAndRecipe => ({ name, recipe });

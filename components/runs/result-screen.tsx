@@ -163,7 +163,9 @@ function LiveResult(props: LiveResultProps) {
             { href: `/${collaboration}/analyses`, label: 'Analyses' },
             { label: analysis.key },
           ]}
-          state={<AnalysisState analysis={analysis} isUnsaved={isUnsaved} run={finished} />}
+          state={
+            <AnalysisState run={finished} {...{ collaboration, analysis, isUnsaved, onChanged }} />
+          }
           actions={actions.head}
         />
         <RunNotices

@@ -44,7 +44,7 @@ export function StoredResult(props: StoredResultProps) {
           { href: `/${collaboration}/analyses`, label: 'Analyses' },
           { label: analysis.key },
         ]}
-        state={<AnalysisState analysis={analysis} run={finished} />}
+        state={<AnalysisState run={finished} {...{ collaboration, analysis, onChanged }} />}
         actions={
           <KeptActions
             placement="head"

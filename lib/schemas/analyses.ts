@@ -106,16 +106,18 @@ export const newRecipeSchema = z
   })
   .superRefine(checkRecipe);
 export type NewRecipe = z.infer<typeof newRecipeSchema>;
+const nameSchema = lineSchema(120);
+export const renameAnalysisSchema = z.strictObject({ name: nameSchema });
 export const createAnalysisSchema = z.strictObject({
-  name: lineSchema(120),
+  name: nameSchema,
   recipe: newRecipeSchema,
 });
 export const updateAnalysisSchema = z.strictObject({
-  name: lineSchema(120).optional(),
+  name: nameSchema.optional(),
   recipe: analysisRecipeSchema.optional(),
 });
 export const copyAnalysisSchema = z.strictObject({
-  name: lineSchema(120).optional(),
+  name: nameSchema.optional(),
   /** Changes made in the same step, such as setting the detections aside. */
   detections: z.enum(['counted', 'none']).optional(),
 });

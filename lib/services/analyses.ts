@@ -1,4 +1,4 @@
-import { QueryTypes, type Transaction } from 'sequelize';
+import { Op, QueryTypes, type Transaction } from 'sequelize';
 import type { z } from 'zod';
 import type { Actor } from '@/lib/access/actor';
 import { demand, may } from '@/lib/access/permissions';
@@ -17,6 +17,7 @@ import {
   AnalysisRow,
   CombinationRow,
   database,
+  FrozenRunRow,
   inTransaction,
   PersonRow,
   PopulationRow,
@@ -267,6 +268,14 @@ export async function copyAnalysis(
 }
 
 /** Changes name or recipe; finished runs keep the recipe that they were made with. */
+/** What is released or may be, stays under the name that people have read. */
+async function refuseFrozen({ id, number }: AnalysisRow, transaction: Transaction): Promise<void> {
+  const own = `(select id from run where analysis_id = ${database().escape(id)})`;
+  const where = { runId: { [Op.in]: database().literal(own) } };
+  if ((await FrozenRunRow.count({ where, transaction })) === 0) return;
+  throw new Conflict(`A-${number} has a frozen run, which keeps its name; copy it to name it anew`);
+}
+
 export async function updateAnalysis(
   actor: Actor,
   key: string,
@@ -276,6 +285,7 @@ export async function updateAnalysis(
   demand(actor, 'save-analysis', { isOwn: isOwn(actor, row) });
   await inTransaction(async (transaction) => {
     if (input.recipe) await checkRecipe(actor, input.recipe, transaction);
+    if (input.name !== undefined && input.name !== row.name) await refuseFrozen(row, transaction);
     await row.update(input, { transaction });
     const item = { kind: 'analysis', id: row.id };
     await recordAudit(actor, 'save-analysis', item, `changed A-${row.number}`, transaction);

@@ -208,6 +208,15 @@ test('a student sets the detections aside in a copy and compares both', async ({
     return limit;
   });
 
+  await test.step('the copy is called what it is for', async () => {
+    await page.getByRole('button', { name: 'Rename' }).click();
+    const dialog = page.getByRole('dialog', { name: /^Rename A-/ });
+    await dialog.getByLabel('Name').fill('None of them counted');
+    await dialog.getByRole('button', { name: 'Save' }).click();
+    await expect(dialog).toBeHidden();
+    await expect(page.getByRole('heading', { level: 1 })).toHaveText('None of them counted');
+  });
+
   await test.step('both stand on one axis', async () => {
     await page.getByRole('link', { name: 'Compare with A-1' }).first().click();
     await expect(

@@ -13,6 +13,7 @@ import {
 import { type AnalysisRecipe, analysisSchema } from '@/lib/schemas/analyses';
 import type { PopulationRow, SurveyRow } from '@/models';
 import { withDatabase } from '../support/database';
+import { buildMap, buildRun } from '../support/lab-rows';
 import {
   bearer,
   call,
@@ -20,7 +21,13 @@ import {
   type TestCollaboration,
   tokenOf,
 } from '../support/people';
-import { buildPopulation, buildSurvey, buildTarget, recipeOf } from '../support/sample';
+import {
+  buildAnalysis,
+  buildPopulation,
+  buildSurvey,
+  buildTarget,
+  recipeOf,
+} from '../support/sample';
 
 const { query } = withDatabase();
 let collaboration: TestCollaboration;
@@ -28,6 +35,7 @@ let survey: SurveyRow;
 let population: PopulationRow;
 let recipe: AnalysisRecipe;
 let owner: Record<string, string>;
+let ownerId: string;
 let student: Record<string, string>;
 let foreign: { headers: Record<string, string>; slug: string; survey: SurveyRow };
 
@@ -38,6 +46,7 @@ beforeAll(async () => {
   await buildTarget(survey);
   population = await buildPopulation(collaboration.id);
   recipe = recipeOf([survey], population);
+  ownerId = made.people.owner.id;
   owner = bearer(await tokenOf(made.people.owner, collaboration));
   student = bearer(await tokenOf(made.people.student, collaboration));
   const other = await createCollaborationWith(['owner']);
@@ -127,6 +136,23 @@ describe('analyses/{key}', () => {
     expect(run.status).toBe(201);
     const running = await (await call(get, { headers: student, params: at(own.key) })).json();
     expect(running.state).toBe('running');
+  });
+
+  it('keeps its name once a run of it is frozen', async () => {
+    const target = await buildTarget(survey);
+    const map = await buildMap(collaboration.id, target);
+    const analysis = await buildAnalysis(collaboration.id, recipe);
+    await buildRun(collaboration.id, analysis, { personId: ownerId, map });
+    const key = `A-${analysis.number}`;
+    const patch = (body: unknown) =>
+      call(update, { method: 'PATCH', headers: owner, params: at(key), body });
+    const refused = await patch({ name: 'Another name' });
+    expect(refused.status).toBe(409);
+    expect((await refused.json()).detail).toBe(
+      `${key} has a frozen run, which keeps its name; copy it to name it anew`,
+    );
+    const kept = await patch({ name: analysis.name, recipe: { ...recipe, credibleLevel: 0.9 } });
+    expect((await kept.json()).name).toBe(analysis.name);
   });
 
   it('is deleted as a draft only', async () => {
