@@ -1,4 +1,5 @@
 import { formatInterval, formatPercent, formatRate } from '@/lib/quantities/display';
+import { flagBoxes } from './bound-flag';
 import { valueAt } from './paths';
 import { lastCrossing } from './posterior-layout';
 import { limitWithLevel, type PosteriorData, savedWords } from './posterior-words';
@@ -112,7 +113,7 @@ function PairNames({ data, frame, x, y, isNarrow }: PosteriorLabelsProps) {
 }
 
 function MedianName({ data, frame, x, y, flagTop }: PosteriorLabelsProps) {
-  const { median, interval68, quantity, curve, limit } = data;
+  const { median, interval68, quantity, curve, limit, credibleLevel } = data;
   if (median === undefined) return null;
   const first = `median ${formatRate(median, quantity)}`;
   const second = interval68 ? `68 %: ${formatInterval(...interval68, quantity)}` : '';
@@ -122,10 +123,19 @@ function MedianName({ data, frame, x, y, flagTop }: PosteriorLabelsProps) {
   // The curve must be left behind at the height of the words, and the bound not yet reached.
   const row = Math.max(curveY - 28, flagTop + 22);
   const clear = x(lastCrossing(curve, curve.density, y.invert(row + 22)) ?? median) + 34;
-  const fitsBefore = clear + wide < x(limit) - 10;
-  const at = fitsBefore ? clear : x(limit) + 14;
-  const height = fitsBefore ? row : flagTop + 52;
-  if (at + wide > frame.right) return null;
+  const flag = {
+    ...{ x: x(limit), top: flagTop, bottom: frame.bottom, left: frame.left, right: frame.right },
+    text: `${data.name ? `${data.name} ` : ''}${limitWithLevel(limit, credibleLevel, quantity)}`,
+  };
+  const [{ left: flagLeft }] = flagBoxes(flag);
+  const fitsBefore = clear + wide < Math.min(x(limit), flagLeft) - 10;
+  const fitsBehind = x(limit) + 14 + wide <= frame.right;
+  // A curve as wide as the plot leaves room below itself alone.
+  const fitsBelow =
+    medianX + wide < x(limit) - 24 && frame.bottom - curveY > 90 && frame.bottom - flagTop > 130;
+  if (!fitsBefore && !fitsBehind && !fitsBelow) return null;
+  const at = fitsBefore ? clear : fitsBehind ? x(limit) + 14 : medianX + 10;
+  const height = fitsBefore ? row : fitsBehind ? flagTop + 52 : frame.bottom - 40;
   return (
     <g>
       {fitsBefore && (
@@ -162,16 +172,19 @@ function TailName({ data, frame, x, y }: PosteriorLabelsProps) {
   );
 }
 
-function PriorName({ data, frame, y }: PosteriorLabelsProps) {
+function PriorName({ data, frame, x, y }: PosteriorLabelsProps) {
   const { prior } = data;
   if (!prior) return null;
   const end = prior.density[prior.density.length - 1];
   if (!Number.isFinite(end)) return null;
   const at = y(end);
   const row = at < frame.top + 14 ? frame.top + 12 : Math.min(at - 8, frame.bottom - 8);
+  const words = `prior: ${prior.label}`;
+  const bar = x(data.limit);
+  const meetsBar = frame.right - textWidth(words, 13) < bar + 6;
   return (
-    <text className="quiet page-halo" x={frame.right} y={row} textAnchor="end">
-      prior: {prior.label}
+    <text className="quiet page-halo" x={meetsBar ? bar - 8 : frame.right} y={row} textAnchor="end">
+      {words}
     </text>
   );
 }
