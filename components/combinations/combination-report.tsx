@@ -1,6 +1,7 @@
 'use client';
 
 import { DepthChart } from '@/components/charts/depth-chart';
+import { YardstickWords } from '@/components/surveys/yardstick-words';
 import { FactsStrip } from '@/components/ui/facts-strip';
 import { Cell, HeadCell, Row, Table, TableBody, TableHead } from '@/components/ui/table';
 import type { CombinationPreview } from '@/lib/schemas/combinations';
@@ -25,7 +26,7 @@ export function CombinationReport({ preview }: { preview: CombinationPreview }) 
             <HeadCell isNumeric>entries</HeadCell>
             <HeadCell isNumeric>new stars</HeadCell>
             <HeadCell isNumeric>without a map</HeadCell>
-            <HeadCell isNumeric>adds at most, stars</HeadCell>
+            <HeadCell isNumeric>adds where it adds most, stars</HeadCell>
           </tr>
         </TableHead>
         <TableBody>
@@ -53,9 +54,11 @@ export function CombinationReport({ preview }: { preview: CombinationPreview }) 
           hasAxisNumbers
         />
         <p className="text-chart text-ink3">
-          In the table each survey adds to those before it; the drawing lays the same parts on each
-          other, the largest at the bottom. Where a star is asked for the same position, the deepest
-          map stands for it here, which is never more than the run itself finds.
+          Completeness averaged over planet mass, for{' '}
+          <YardstickWords yardstick={preview.yardstick} />. In the table each survey adds to those
+          before it; the drawing lays the same parts on each other, the largest at the bottom. Where
+          a star is asked for the same position, the deepest map stands for it here, which is never
+          more than the run itself finds.
         </p>
       </div>
     </>

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { idSchema, lineSchema, moment } from './common';
+import { yardstickSchema } from './yardstick';
 
 /** Rules for a star in several surveys; `default` and `refuse` hold for all stars or none. */
 export const combinationRuleSchema = z.enum([
@@ -90,6 +91,8 @@ export const combinationPreviewSchema = z.object({
     }),
   ),
   semiMajorAxisAu: z.array(z.number()),
+  /** What completeness is averaged over along the mass. */
+  yardstick: yardstickSchema,
   shared: z.array(
     z.object({
       starId: idSchema,

@@ -17,6 +17,7 @@ import {
   gridOfSettings,
   type MapsTogether,
   summariseTogether,
+  type Yardstick,
 } from './survey-depth';
 import { together } from './together';
 
@@ -99,7 +100,8 @@ async function readPreview(
     return { starId: id, name, surveyIds, canSamePosition, rule };
   });
   const ruleOfStar = new Map(shared.map(({ starId, rule }) => [starId, rule]));
-  const { adds, semiMajorAxisAu } = await sumUp(actor, surveys, entriesOf, ruleOfStar);
+  const yardstick = await currentYardstick(actor.collaborationId);
+  const { adds, semiMajorAxisAu } = await sumUp(yardstick, surveys, entriesOf, ruleOfStar);
   const names = new Map(surveys.map(({ id, name }) => [id, name]));
   return {
     words: describeStoredCombination(definition, (id) => names.get(id) ?? 'a deleted survey'),
@@ -119,6 +121,7 @@ async function readPreview(
       };
     }),
     semiMajorAxisAu: [...semiMajorAxisAu],
+    yardstick: yardstick.view,
     shared,
   };
 }
@@ -155,7 +158,7 @@ function ruleOf(
  * @returns adds: shape [survey][semiMajorAxis], stars
  */
 async function sumUp(
-  actor: Actor,
+  yardstick: Yardstick,
   surveys: SurveyRow[],
   entriesOf: Map<string, Entry[]>,
   ruleOfStar: Map<string, StarRule>,
@@ -173,9 +176,9 @@ async function sumUp(
     });
   });
   const summaries = await summariseTogether(
-    actor.collaborationId,
+    surveys[0].collaborationId,
     steps.map(({ together }) => together),
-    await currentYardstick(actor.collaborationId),
+    yardstick,
     grid,
   );
   steps.forEach(({ surveyId, isFirst }, i) => {
