@@ -116,10 +116,10 @@ export function setAside<Kept extends KeptCandidate>(
   return { treatment: 'set-aside', entries };
 }
 
-const named = (entries: StatedCandidates['entries']) =>
+const named = (entries: StatedCandidates['entries'], of = '') =>
   entries
     .map(({ name, probability }) =>
-      probability === null ? name : `${name} (${formatPlain(probability)})`,
+      probability === null ? name : `${name} (${of}${formatPlain(probability)})`,
     )
     .join(', ');
 
@@ -127,7 +127,8 @@ const named = (entries: StatedCandidates['entries']) =>
 export function describeCandidates(stated: StatedCandidates): string {
   const { treatment, entries } = stated;
   if (entries.length === 0) return 'none without an answer inside the ranges';
-  if (treatment === 'set-aside') return `set aside, though not settled: ${named(entries)}`;
+  if (treatment === 'set-aside')
+    return `set aside, though not settled: ${named(entries, 'probability ')}`;
   const count = entries.length === 1 ? '1 counts' : `${entries.length} count`;
   return treatment === 'fixed'
     ? `${count} with the probability of being real, held fixed: ${named(entries)}`

@@ -139,13 +139,13 @@ describe('stateRun', () => {
       { name: 'RB 0003 cc1', probability: 0.35, insideRanges: true },
       { name: 'RB 0004 cc1', probability: 0.2, insideRanges: false },
     ];
-    const words = 'Candidates: set aside, though not settled: RB 0003 cc1 (0.35).';
+    const words = 'Candidates: set aside, though not settled: RB 0003 cc1 (probability 0.35).';
     const document = limitDocument(stated(run));
     expect(limitAsText(document)).toContain(words);
-    expect(limitAsLatex(document)).toContain('RB 0003 cc1 (0.35)');
+    expect(limitAsLatex(document)).toContain('RB 0003 cc1 (probability 0.35)');
     expect(document.conditions).toContainEqual({
       label: 'Candidates',
-      text: 'set aside, though not settled: RB 0003 cc1 (0.35)',
+      text: 'set aside, though not settled: RB 0003 cc1 (probability 0.35)',
     });
     const entries = [{ name: 'RB 0003 cc1', probability: 0.35 }];
     const counting = { ...run.result, candidates: { treatment: 'fixed' as const, entries } };
