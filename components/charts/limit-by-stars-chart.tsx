@@ -30,6 +30,8 @@ export interface LimitByStarsChartProps {
   starsNeeded: number | null;
   quantity: RateQuantity;
   levelLabel: string;
+  /** Of the rate that outcomes are drawn at: "at a host fraction of 3.0 %". */
+  rateLabel: string;
 }
 
 const margin = { left: 52, right: 16, top: 52, bottom: 48 };
@@ -37,7 +39,7 @@ const height = 330;
 
 /** The limit that so many planned stars would set, nothing found, and its spread if some are. */
 export function LimitByStarsChart(props: LimitByStarsChartProps) {
-  const { stars, limitIfNone, low, high, wanted, quantity, levelLabel } = props;
+  const { stars, limitIfNone, low, high, wanted, quantity, levelLabel, rateLabel } = props;
   const [measure, width] = useWidth<HTMLDivElement>(620);
   const [at, setAt] = useState<ReadPlace>();
   const frame = frameWithin(margin, width, height);
@@ -63,7 +65,7 @@ export function LimitByStarsChart(props: LimitByStarsChartProps) {
       height={height}
       measure={measure}
       tables={() => [starsTable(props)]}
-      caption="shaded: 68 % of outcomes at the assumed rate"
+      caption={`shaded: 68 % of outcomes ${rateLabel}`}
       overlay={
         <ChartReadout
           frame={frame}

@@ -136,7 +136,9 @@ function notesOf(
   const untouched = rows.filter(({ fault, starsUnchanged }) => !fault && starsUnchanged === stars);
   if (untouched.length > 0) {
     const count = untouched.length === 1 ? '1 change leaves' : `${untouched.length} changes leave`;
-    notes.push(`${count} every map as it is: nothing measured or set allows a shift`);
+    notes.push(
+      `${count} every map as it is: the run has it so already, or nothing measured or set allows a shift`,
+    );
   }
   return notes;
 }

@@ -71,6 +71,7 @@ export function ForecastAnswer({ asked, settings, result }: AnswerProps<'forecas
             starsNeeded={result.starsNeeded}
             quantity={quantity}
             levelLabel={levelLabel}
+            rateLabel={forecastRateInWords(settings.assumedRate, quantity)}
           />
           <p className="mt-1 max-w-[72ch]">{neededInWords(result, quantity)}</p>
         </section>

@@ -61,8 +61,9 @@ export function FreeIndicesAnswer({ asked, result }: AnswerProps<'free-indices'>
           </div>
           <ParameterTable result={result} parameters={parameters} convention={convention} />
           <p className="mt-2 text-chart text-ink3">
-            Areas: 68 and 95{'\u2009'}%. Dashed: held fixed in the run. Intervals: equal probability
-            on each side.
+            Planes: areas of 68 and 95{'\u2009'}%. Curves: all of the density, its central 68
+            {'\u2009'}% darker, the median dotted. Dashed: held fixed in the run. Intervals: equal
+            probability on each side.
           </p>
           <div className="mt-6">
             <FactsStrip

@@ -40,7 +40,8 @@ export function OverlapAnswer({ asked, result }: AnswerProps<'overlap-rules'>) {
       )}
       <p className="mt-2 text-chart text-ink3">
         Shaded: limits between the larger of the surveys’ probabilities and their sum, which hold
-        whatever the correlation between epochs.
+        whatever the correlation between epochs. “Same position” makes a star’s map anew, with the
+        age and distance of the survey listed first, so it may fall below the deepest map.
       </p>
       <AnswerNotes notes={result.notes} />
       <div className="mt-6">

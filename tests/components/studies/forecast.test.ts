@@ -106,6 +106,7 @@ describe('a forecast in charts', () => {
         starsNeeded: result.starsNeeded,
         quantity: 'host_fraction',
         levelLabel: '95\u2009%',
+        rateLabel: 'at a host fraction of 2.5\u2009%',
       }),
     );
     for (const markup of [yieldMarkup, limitMarkup]) {
@@ -114,6 +115,7 @@ describe('a forecast in charts', () => {
     }
     expect(yieldMarkup).toContain('chance of none 19\u2009%');
     expect(limitMarkup).toContain('reached with 268 stars');
+    expect(limitMarkup).toContain('68 % of outcomes at a host fraction of 2.5');
   });
 
   it('says when no number of stars is enough', () => {
