@@ -6,6 +6,8 @@ import type { YardstickView } from '@/lib/schemas/yardstick';
 /** The detection probability of each row, as a bar and in percent; a dash where there is no map. */
 export function probabilityColumn<Row extends { probability: number | null }>(
   yardstick: YardstickView | null,
+  /** Which of several maps a row shows: "of the survey that sees most". */
+  which?: string,
 ): DataColumn<Row> {
   return {
     id: 'seen',
@@ -14,6 +16,7 @@ export function probabilityColumn<Row extends { probability: number | null }>(
         <span className="max-md:hidden">detection probability</span>
         <span className="md:hidden">seen</span>
         <YardstickLines yardstick={yardstick} />
+        {which !== undefined && <span className="block text-[12px] leading-tight">{which}</span>}
       </>
     ),
     name: 'detection probability',

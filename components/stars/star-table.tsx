@@ -181,7 +181,11 @@ export function StarTable({ collaboration, stars, surveys, yardstick }: StarTabl
     <DataTable
       caption="Stars, each once"
       rows={stars}
-      columns={[nameColumn(collaboration), ...valueColumns, probabilityColumn(yardstick)]}
+      columns={[
+        nameColumn(collaboration),
+        ...valueColumns,
+        probabilityColumn(yardstick, 'by the survey that sees most'),
+      ]}
       rowId={({ id }) => id}
       noun={{ one: 'star', many: 'stars' }}
       searchLabel="Name or Gaia number"
