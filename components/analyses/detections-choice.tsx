@@ -30,7 +30,7 @@ export function DetectionsChoice({ chosen, surveys, onChange, children }: Detect
         ]}
       />
       <p className="mt-2 text-ink3 text-note">
-        {confirmed} confirmed in these surveys.
+        {confirmed} confirmed in these surveys; those inside the ranges count.
         {chosen === 'none' && ' With all detections set aside, candidates are set aside too.'}
       </p>
       {chosen === 'counted' && children}

@@ -75,7 +75,7 @@ export function surveyWords(survey: Pick<SurveyView, 'maps' | 'targets' | 'band'
   const { ready, waiting, failed, stale } = survey.maps;
   const missing = survey.targets - ready;
   const parts = [`${survey.targets} targets in ${survey.band}`];
-  parts.push(missing === 0 ? 'all maps ready' : `${ready} maps ready`);
+  parts.push(missing === 0 ? 'all maps made' : `${ready} maps made`);
   if (stale) parts.push(`${stale} of them stale: refresh them first (survey, Maps)`);
   if (waiting > 0) parts.push(`${waiting} being computed`);
   if (failed > 0) parts.push(`${failed} failed`);

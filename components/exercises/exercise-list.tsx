@@ -30,7 +30,7 @@ export function ExerciseList({ collaboration, initial, canSet }: ExerciseListPro
       <PageTitle
         title="Exercises"
         crumbs={[{ href: `/${collaboration}/analyses`, label: 'Analyses' }, { label: 'exercises' }]}
-        context="an analysis as a task: begin with a draft of your own, change what is open, hand in a run"
+        context="An analysis as a task: begin with a draft of your own, change what is open, hand in a run"
         actions={exercises.length > 0 && setOne}
       />
       {exercises.length === 0 ? (

@@ -72,7 +72,9 @@ export function VersionList({
             </span>
             <span className="block text-ink2">
               {version.note === '' ? 'Without a note' : version.note}
-              {version.usedBy.length > 0 && `; used by ${version.usedBy.join(', ')}`}
+              {version.usedBy.length > 0 && (
+                <span className="block text-ink3">used by {version.usedBy.join(', ')}</span>
+              )}
             </span>
           </li>
         ))}

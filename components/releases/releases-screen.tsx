@@ -36,7 +36,7 @@ export function ReleasesScreen(props: ReleasesScreenProps) {
     <>
       <PageTitle
         title="Releases"
-        context="Frozen runs that the public can read, each run again from its inputs before it went out."
+        context="Frozen runs on their way to the public: each is run again from its inputs before it goes out."
         actions={releases.length > 0 && newButton}
       />
       {releases.length === 0 ? (

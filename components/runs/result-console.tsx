@@ -85,7 +85,9 @@ export function ResultConsole(props: ResultConsoleProps) {
           )}
           <p className="ml-auto max-w-[170px] text-right text-chart text-ink3 leading-[1.3] max-md:hidden">
             Each choice carries the limit it would give,{' '}
-            {quantity === 'host_fraction' ? 'in %' : 'in planets per 100 stars'}
+            {quantity === 'host_fraction'
+              ? 'in %; of Poisson planets per 100 stars'
+              : 'in planets per 100 stars'}
           </p>
           <TextAction
             className="mx-auto font-semibold md:hidden"

@@ -90,9 +90,14 @@ export function posterior(): HelpDrawing {
       ticks: [0, 0.04, 0.08, 0.12, 0.16],
       times: 100,
     },
-    y: { name: 'density', scale: 'linear', domain: [0, 20], ticks: [0, 5, 10, 15, 20] },
+    y: {
+      name: 'density per planet per star',
+      scale: 'linear',
+      domain: [0, 20],
+      ticks: [0, 5, 10, 15, 20],
+    },
     curves: [draw(x, density, 'data')],
-    flag: { at: limit, text: `<${(100 * limit).toPrecision(2)} (95 %)` },
+    flag: { at: limit, text: `<${(100 * limit).toPrecision(2)} per 100 (95 %)` },
   };
 }
 

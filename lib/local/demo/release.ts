@@ -23,7 +23,7 @@ export async function releaseLead({ actors, analysisId, finish }: DemoRelease): 
     rejectOnEmpty: true,
   });
   await freezeRun(author, run.id, {
-    reason: 'Candidates inside the ranges wait for a second epoch; they are set aside.',
+    reason: 'The epochs of the candidate inside the ranges cannot tell yet; it is set aside.',
   });
   const title = 'Giant planets on wide orbits around young stars';
   const common = {

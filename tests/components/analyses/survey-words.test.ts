@@ -9,9 +9,9 @@ const ofMaps = (stale: number | null) =>
   });
 
 it('says of a survey to choose how many of its ready maps are stale', () => {
-  expect(ofMaps(0)).toBe('96 targets in H, all maps ready');
-  expect(ofMaps(null)).toBe('96 targets in H, all maps ready');
+  expect(ofMaps(0)).toBe('96 targets in H, all maps made');
+  expect(ofMaps(null)).toBe('96 targets in H, all maps made');
   expect(ofMaps(90)).toBe(
-    '96 targets in H, all maps ready, 90 of them stale: refresh them first (survey, Maps)',
+    '96 targets in H, all maps made, 90 of them stale: refresh them first (survey, Maps)',
   );
 });
