@@ -16,7 +16,11 @@ export function probabilityColumn<Row extends { probability: number | null }>(
         <span className="max-md:hidden">detection probability</span>
         <span className="md:hidden">seen</span>
         <YardstickLines yardstick={yardstick} />
-        {which !== undefined && <span className="block text-[12px] leading-tight">{which}</span>}
+        {which !== undefined && (
+          <span className="ml-auto block w-min text-[12px] leading-tight max-md:whitespace-normal md:w-max">
+            {which}
+          </span>
+        )}
       </>
     ),
     name: 'detection probability',
