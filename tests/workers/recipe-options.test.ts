@@ -139,7 +139,7 @@ describe('candidates of fixed probability', () => {
       ],
     });
     expect(condition(conditions, 'Candidates')).toBe(
-      'Candidates: 2 count with the probability of being real, held fixed: Star 5 b (probability 0.3), Star 6 b (probability 0.8)',
+      'Candidates: 2 count with the probability of being real, held fixed: Star 5 b (0.3), Star 6 b (0.8)',
     );
     expect(result.levels.every(({ meanNumber }) => meanNumber !== null)).toBe(true);
   });
@@ -166,7 +166,7 @@ describe('candidates set aside', () => {
     expect(result.answer.limit).toBe(await direct(run, {}));
     expect(result.candidates).toBeNull();
     expect(condition(conditions, 'Candidates')).toBe(
-      'Candidates: set aside, though not settled: Star 5 b (0.3), Star 6 b (0.8)',
+      'Candidates: set aside, though not settled: Star 5 b (probability 0.3), Star 6 b (probability 0.8)',
     );
   });
 
