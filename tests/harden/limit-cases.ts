@@ -58,6 +58,7 @@ export const limitCases: Record<LimitName, LimitCase> = {
   uploads: {
     routes: {
       [team('uploads')]: (who) => who.byToken('POST', 'uploads'),
+      [team('unfinished-files')]: (who) => who.byToken('POST', 'unfinished-files'),
       [team('bundles')]: (who) => who.byToken('POST', 'bundles'),
     },
   },
